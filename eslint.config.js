@@ -1,0 +1,65 @@
+import js from '@eslint/js';
+import prettier from 'eslint-config-prettier';
+import tseslint from 'typescript-eslint';
+
+// The design's rule: imports point one way. Each room may import only the rooms named here.
+// test/architecture.test.ts reads the same table and proves it on every file.
+export const mayImport = {
+  errors: [],
+  clock: ['errors'],
+  quantity: ['errors'],
+  statistics: ['errors'],
+  circuit: ['errors', 'statistics'],
+  record: ['errors', 'quantity'],
+  files: ['errors', 'quantity'],
+  instrument: ['errors', 'clock', 'quantity', 'files'],
+  bench: ['errors', 'clock', 'quantity', 'files', 'instrument'],
+  steps: ['errors', 'clock', 'quantity', 'files', 'record', 'bench'],
+  run: ['errors', 'clock', 'quantity', 'files', 'record', 'bench', 'steps'],
+  simulation: ['errors', 'clock', 'quantity', 'files', 'instrument', 'circuit'],
+  analysis: ['errors', 'quantity', 'statistics', 'circuit', 'record'],
+  judgement: ['errors', 'quantity', 'statistics', 'analysis'],
+  report: ['errors', 'quantity', 'record', 'analysis', 'judgement'],
+};
+/** Rooms that compute only: no ports, files, clocks or processes. */
+export const pure = ['quantity', 'statistics', 'circuit', 'analysis', 'judgement'];
+
+const rooms = [...Object.keys(mayImport), 'cli'];
+const boundaries = Object.entries(mayImport).map(([room, allowed]) => ({
+  files: [`src/${room}/**/*.ts`],
+  rules: {
+    'no-restricted-imports': [
+      'error',
+      {
+        patterns: [
+          ...rooms
+            .filter((other) => other !== room && !allowed.includes(other))
+            .map((other) => ({ group: [`**/${other}/*.js`], message: `${room} may not import ${other}.` })),
+          ...(pure.includes(room) ? [{ group: ['node:*'], message: `${room} only computes.` }] : []),
+        ],
+      },
+    ],
+  },
+}));
+
+export default tseslint.config(
+  { ignores: ['dist', 'coverage', 'runs'] },
+  js.configs.recommended,
+  ...tseslint.configs.strictTypeChecked,
+  {
+    languageOptions: {
+      parserOptions: { projectService: { allowDefaultProject: ['eslint.config.js'] }, tsconfigRootDir: import.meta.dirname },
+    },
+    rules: {
+      '@typescript-eslint/switch-exhaustiveness-check': 'error',
+      '@typescript-eslint/restrict-template-expressions': ['error', { allowNumber: true, allowBoolean: true }],
+      '@typescript-eslint/no-unnecessary-condition': ['error', { allowConstantLoopConditions: true }],
+      '@typescript-eslint/consistent-type-imports': 'error',
+      'no-console': 'error',
+      eqeqeq: 'error',
+    },
+  },
+  { files: ['**/*.js'], ...tseslint.configs.disableTypeChecked },
+  ...boundaries,
+  prettier,
+);

@@ -1,0 +1,71 @@
+import type { Amperes, Celsius, Kelvins, Ohms, Ratio, Seconds, Volts } from '../quantity/quantity.js';
+
+/** What is really there, on a bench with simulated instruments. */
+export interface Simulation {
+  readonly seed: number;
+  readonly circuit: 'single' | 'parallel' | 'series';
+  /** Module (or group) to load terminals, there and back. */
+  readonly leads: Ohms;
+  readonly modules: readonly SimulatedModule[];
+  /** Each instrument's own errors; those left out are drawn from the seed within the driver's accuracy. */
+  readonly instruments: Readonly<Record<string, SimulatedInstrument>>;
+  /** What the simulated operator answers to an `operator` step, by the step's name. */
+  readonly answers: Readonly<Record<string, string>>;
+  readonly faults: readonly SimulatedFault[];
+}
+
+export interface SimulatedModule {
+  readonly name: string;
+  readonly openCircuitVoltage: Volts;
+  readonly droopResistance: Ohms;
+  readonly limit: ModuleLimit;
+  /** Oscillates from here to the limit. */
+  readonly unsteadyAbove?: Amperes;
+  /** Standard deviation of the output's own noise, as a meter's reading sees it. */
+  readonly noise: Volts;
+  /** Parallel only. */
+  readonly ballast: Ohms;
+  /** Series only. */
+  readonly reverseDiode: boolean;
+  readonly earth: 'bonded' | 'isolated' | Ohms;
+  /** For the heating: at this current the rise is `rise-at-rated`. Three quarters of the limit when left out. */
+  readonly ratedCurrent?: Amperes;
+  readonly thermal?: {
+    readonly riseAtRated: Kelvins;
+    readonly timeConstant: Seconds;
+    readonly ambient: Celsius;
+    /** Relative change of the limit for each kelvin of rise. */
+    readonly limitPerKelvin: Ratio;
+  };
+}
+
+export type ModuleLimit =
+  | { readonly style: 'constant-current'; readonly current: Amperes }
+  /** Folds back along a straight line to `shortCircuit` at 0 V. */
+  | { readonly style: 'foldback'; readonly current: Amperes; readonly shortCircuit: Amperes }
+  | { readonly style: 'constant-power'; readonly current: Amperes }
+  /** Tries to start once each period. */
+  | { readonly style: 'hiccup'; readonly current: Amperes; readonly period: Seconds }
+  /** Off until its input is cycled. */
+  | { readonly style: 'latch-off'; readonly current: Amperes };
+
+export interface SimulatedInstrument {
+  /** By reading name: the errors this one really has. */
+  readonly errors: Readonly<Record<string, SimulatedError>>;
+  /** How long it takes over one reading. */
+  readonly readingTime?: Seconds;
+}
+
+export interface SimulatedError {
+  /** Relative error of the reading. */
+  readonly gain: Ratio;
+  readonly offset: number;
+  readonly resolution: number;
+}
+
+export type FaultName = 'load-silent' | 'meter-silent' | 'load-lost' | 'meter-lost' | 'module-dead' | 'reversed';
+
+export interface SimulatedFault {
+  readonly at: Seconds;
+  readonly what: FaultName;
+}

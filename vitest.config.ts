@@ -1,0 +1,12 @@
+import { defineConfig } from 'vitest/config';
+
+export default defineConfig({
+  test: {
+    include: ['test/**/*.test.ts'],
+    pool: 'forks',
+    restoreMocks: true,
+    unstubEnvs: true,
+    testTimeout: 20_000,
+    reporters: process.env['CI'] ? ['default', ['json', { outputFile: '.vitest-result.json' }]] : ['default'],
+  },
+});
