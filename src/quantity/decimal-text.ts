@@ -1,0 +1,38 @@
+/**
+ * The decimal text of `value` times ten to the power of `places`, digit for digit: the point is moved in
+ * the text and nothing is multiplied, so that reading the text back with the opposite shift gives the very
+ * same number. With `significant` it is rounded to that many digits first and keeps trailing zeros.
+ * @example shiftedText(0.035, 3); // => '35'
+ * @example shiftedText(15.2, 0, 4); // => '15.20'
+ */
+export function shiftedText(value: number, places: number, significant?: number): string {
+  const [mantissa = '0', exponentText = '0'] = exponentialText(value, significant);
+  const exponent = Number(exponentText) + places;
+  const sign = mantissa.startsWith('-') ? '-' : '';
+  const digits = mantissa.replace('-', '').replace('.', '');
+  if (exponent < -7 || exponent > 20) return `${mantissa}e${exponent}`;
+  if (exponent < 0) return `${sign}0.${'0'.repeat(-exponent - 1)}${digits}`;
+  const whole = digits.slice(0, exponent + 1).padEnd(exponent + 1, '0');
+  const rest = digits.slice(exponent + 1);
+  return rest === '' ? `${sign}${whole}` : `${sign}${whole}.${rest}`;
+}
+
+/**
+ * `value` times ten to the power of `places`, correctly rounded: 0.07 by two places is 7, where
+ * multiplying gives 7.000000000000001. What is not finite stays as it is.
+ */
+export function shifted(value: number, places: number): number {
+  if (!Number.isFinite(value)) return value;
+  const [mantissa = '0', exponent = '0'] = exponentialText(value);
+  return Number(`${mantissa}e${Number(exponent) + places}`);
+}
+
+/** The power of ten of the first digit, after rounding to `significant` digits; 0 for zero. */
+export function decimalExponent(value: number, significant?: number): number {
+  return Number(exponentialText(value, significant)[1]);
+}
+
+function exponentialText(value: number, significant?: number): string[] {
+  const digits = significant === undefined ? undefined : Math.min(Math.max(significant, 1), 17) - 1;
+  return value.toExponential(digits).split('e');
+}
