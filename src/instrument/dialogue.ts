@@ -1,0 +1,213 @@
+import type { Clock } from '../clock/clock.js';
+import type { Wire } from '../files/driver.js';
+import type { Connection } from './connection.js';
+import type { Trace } from './dialogue-record.js';
+import { Line } from './line.js';
+import { noticeText, type Notice, type OnNotice } from './notice.js';
+import { InstrumentSilentError, OutOfStepError, ReplyTooLongError } from './reply-errors.js';
+import type { ReplyReader } from './reply-reader.js';
+import { Turns } from './turns.js';
+import { visible } from './visible.js';
+
+export interface DialogueParts {
+  readonly connection: Connection;
+  readonly wire: Wire;
+  readonly clock: Clock;
+  /** The question for the identity; also what the dialogue gets back in step by. */
+  readonly identify: string;
+  /** Whether a reply may be this instrument's identity; any that is not empty will do when left out. */
+  readonly isIdentity?: (reply: string) => boolean;
+  readonly trace?: Trace;
+  readonly onNotice?: OnNotice;
+}
+
+/** How long a block may take in all, and getting back in step, in timeouts. */
+const blockPatience = 60;
+const stepPatience = 8;
+const attempts = 3;
+const mostLateReplies = 256;
+
+/**
+ * Questions and answers with one instrument, one question at a time; those asked meanwhile wait.
+ *
+ * Replies carry no sign of the question they answer, so a late one must be kept from being taken for the
+ * next answer. What is on the line before a question is thrown away and told. After a question without an
+ * answer the dialogue is out of step: before the next question it asks for the identity, and since
+ * instruments answer in order, all that comes before the identity is late. Where an identity was asked for
+ * more than once and not answered as often, or is not known yet, the line must also stay quiet for a
+ * whole timeout. Telling needs no step, so an instrument can always be told to be safe.
+ */
+export class Dialogue {
+  readonly #connection: Connection;
+  readonly #line: Line;
+  readonly #wire: Wire;
+  readonly #clock: Clock;
+  readonly #identify: string;
+  readonly #isIdentity: (reply: string) => boolean;
+  readonly #onNotice: OnNotice | undefined;
+  readonly #turns = new Turns();
+  #inStep = true;
+  #identity: string | undefined;
+  /** How many times the identity was asked for and has not been answered. */
+  #identitiesDue = 0;
+
+  constructor(parts: DialogueParts) {
+    this.#connection = parts.connection;
+    this.#line = new Line(parts.connection, parts.wire, parts.clock, parts.trace);
+    this.#wire = parts.wire;
+    this.#clock = parts.clock;
+    this.#identify = parts.identify;
+    this.#isIdentity = parts.isIdentity ?? ((reply) => reply.trim() !== '');
+    this.#onNotice = parts.onNotice;
+  }
+
+  get address(): string {
+    return this.#connection.address;
+  }
+
+  /**
+   * Sends a message that has no answer.
+   * @throws ConnectionLostError
+   */
+  tell(message: string): Promise<void> {
+    return this.#turns.take(() => this.#line.send(message));
+  }
+
+  /**
+   * Sends a question and waits for its answer, a line, for the wire's timeout in all.
+   * @throws InstrumentSilentError, ReplyTooLongError, OutOfStepError, ConnectionLostError
+   */
+  async ask(message: string): Promise<string> {
+    const timeout = this.#wire.timeout;
+    return this.#turns.take(async () => {
+      const reply = await this.#question(message, (reader) => reader.line(), timeout);
+      if (message === this.#identify) this.#learn(reply);
+      return reply;
+    });
+  }
+
+  /**
+   * Sends a question that is answered by a block of bytes. The timeout is the longest silence; a block that
+   * keeps coming may take sixty times as long.
+   * @throws as `ask`, and ReplyNotUnderstoodError when the answer is no block
+   */
+  askBlock(message: string): Promise<Uint8Array> {
+    return this.#turns.take(() =>
+      this.#question(message, (reader) => reader.block(), blockPatience * this.#wire.timeout),
+    );
+  }
+
+  /** Says that the last answer made no sense: the next question finds out first whether we are in step. */
+  doubt(): void {
+    this.#inStep = false;
+  }
+
+  /** Never rejects; a question under way ends with ConnectionLostError. */
+  close(): Promise<void> {
+    return this.#connection.close();
+  }
+
+  async #question<Reply>(
+    message: string,
+    cut: (reader: ReplyReader) => Reply | undefined,
+    atMost: number,
+  ): Promise<Reply> {
+    const clean = await this.#clearLine();
+    if (!clean || !this.#inStep) await this.#getInStep();
+    // In step again only once this question is answered: whatever is thrown below leaves that open.
+    this.#inStep = false;
+    await this.#send(message);
+    const reply = await this.#line.reply(cut, {
+      since: this.#line.sentAt,
+      silence: this.#wire.timeout,
+      atMost,
+    });
+    if (reply === undefined) {
+      this.#notice({ kind: 'out-of-step', question: visible(message) });
+      throw new InstrumentSilentError({
+        address: this.address,
+        question: message,
+        timeout: this.#wire.timeout,
+        begun: this.#line.begun(),
+      });
+    }
+    this.#inStep = true;
+    return reply;
+  }
+
+  #learn(reply: string): void {
+    this.#identitiesDue = 0;
+    const identity = reply.trim();
+    if (this.#identity === undefined && this.#isIdentity(identity)) this.#identity = identity;
+    else if (this.#identity !== identity) this.#inStep = false;
+  }
+
+  async #send(message: string): Promise<void> {
+    if (message === this.#identify) this.#identitiesDue++;
+    await this.#line.send(message);
+  }
+
+  /** Whether what was thrown away, if anything, had come to an end. */
+  async #clearLine(): Promise<boolean> {
+    const { size, begins, unfinished } = await this.#line.clear();
+    if (size > 0) this.#notice({ kind: 'unasked-bytes', shown: visible(begins), size });
+    return !unfinished;
+  }
+
+  async #getInStep(): Promise<void> {
+    this.#inStep = false;
+    const giveUp = this.#clock.now() + stepPatience * this.#wire.timeout;
+    for (let attempt = 0; attempt < attempts && this.#clock.now() < giveUp; attempt++) {
+      await this.#clearLine();
+      await this.#send(this.#identify);
+      if ((await this.#heardIdentity(giveUp)) && (await this.#clearLine())) {
+        this.#identitiesDue = 0;
+        this.#notice({ kind: 'in-step-again' });
+        return;
+      }
+    }
+    throw this.#outOfStep(`it does not answer "${visible(this.#identify)}" as it should`);
+  }
+
+  /** Reads up to the last identity that is due: past it when all came, or when nothing comes any more. */
+  async #heardIdentity(giveUp: number): Promise<boolean> {
+    let heard = false;
+    for (let count = 0; count < mostLateReplies; count++) {
+      const reply = await this.#nextLine(giveUp);
+      if (reply === undefined) return heard && this.#clock.now() < giveUp;
+      if (!this.#mayBeIdentity(reply)) {
+        this.#notice({ kind: 'late-reply', shown: visible(reply) });
+        continue;
+      }
+      heard = true;
+      this.#identitiesDue = Math.max(0, this.#identitiesDue - 1);
+      if (this.#identity !== undefined && this.#identitiesDue === 0) return true;
+    }
+    throw this.#outOfStep('it does not stop talking');
+  }
+
+  #mayBeIdentity(reply: string): boolean {
+    const text = reply.trim();
+    return this.#identity === undefined ? this.#isIdentity(text) : text === this.#identity;
+  }
+
+  /** The next line, or undefined once the line has been quiet for a whole timeout. */
+  async #nextLine(giveUp: number): Promise<string | undefined> {
+    const since = this.#clock.now();
+    const patience = { since, silence: this.#wire.timeout, atMost: giveUp - since };
+    try {
+      return await this.#line.reply((reader) => reader.line(), patience);
+    } catch (error) {
+      if (error instanceof ReplyTooLongError) throw this.#outOfStep('it does not stop talking');
+      throw error;
+    }
+  }
+
+  #notice(notice: Notice): void {
+    this.#onNotice?.(noticeText(this.address, notice), notice);
+  }
+
+  #outOfStep(reason: string): OutOfStepError {
+    return new OutOfStepError({ address: this.address, identify: this.#identify, reason });
+  }
+}

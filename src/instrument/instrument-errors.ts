@@ -1,0 +1,68 @@
+import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+import type { ScpiError } from './scpi-error.js';
+import { visible } from './visible.js';
+
+/** The instrument's own error queue holds something after what it was told. */
+export class InstrumentComplainedError extends RailproofError {
+  readonly code = 'INSTRUMENT_COMPLAINED';
+  readonly exitCode = exitCodes.instrument;
+  readonly address: string;
+  readonly entries: readonly ScpiError[];
+  /** The messages that were sent before the queue was read. */
+  readonly after: readonly string[];
+
+  constructor(facts: { address: string; entries: readonly ScpiError[]; after: readonly string[] }) {
+    const entries = facts.entries.map(({ number, text }) => `${number} "${visible(text)}"`);
+    const shown = entries.length > 3 ? [...entries.slice(0, 3), `and ${entries.length - 3} more`] : entries;
+    const after = facts.after.map((message) => `"${visible(message)}"`).join(', ');
+    super(`${facts.address} reports ${shown.join(', ')}${after === '' ? '' : ` after ${after}`}`, {
+      advice:
+        'Does the driver fit this instrument, and is the value within its range? "railproof drivers --try" shows which messages it refuses.',
+    });
+    this.address = facts.address;
+    this.entries = facts.entries;
+    this.after = facts.after;
+  }
+}
+
+/** Something answers at the address, and it is not what the driver is for. */
+export class WrongInstrumentError extends RailproofError {
+  readonly code = 'WRONG_INSTRUMENT';
+  readonly exitCode = exitCodes.instrument;
+  readonly address: string;
+  readonly role: string;
+  readonly driver: string;
+  readonly identity: string;
+
+  constructor(facts: { address: string; role: string; driver: string; identity: string }) {
+    const identity = visible(facts.identity);
+    super(
+      `${facts.address} answers as "${identity}", which is not a ${facts.role} that the driver ${facts.driver} is for`,
+      {
+        advice:
+          'Are two cables or two lines of the bench file swapped? Is the driver the right one, and the baud rate?',
+      },
+    );
+    this.address = facts.address;
+    this.role = facts.role;
+    this.driver = facts.driver;
+    this.identity = identity;
+  }
+}
+
+/** Something was asked of an instrument that its driver does not say how to do. */
+export class NotInDriverError extends RailproofError {
+  readonly code = 'NOT_IN_DRIVER';
+  readonly exitCode = exitCodes.badFile;
+  readonly driver: string;
+  readonly what: string;
+
+  constructor(facts: { driver: string; what: string }) {
+    super(`The driver ${facts.driver} has no ${facts.what}`, {
+      advice:
+        'Add it to the driver file if the instrument can do it (drivers/README.md says how), or use another instrument.',
+    });
+    this.driver = facts.driver;
+    this.what = facts.what;
+  }
+}

@@ -1,0 +1,123 @@
+import type { Clock } from '../clock/clock.js';
+import type { Wire } from '../files/driver.js';
+import type { Seconds } from '../quantity/quantity.js';
+import type { Connection } from './connection.js';
+import type { Trace } from './dialogue-record.js';
+import { ReplyReader } from './reply-reader.js';
+
+export interface Patience {
+  /** Counted from here. */
+  readonly since: Seconds;
+  /** Longest silence. */
+  readonly silence: Seconds;
+  /** Longest wait in all, however much comes. */
+  readonly atMost: Seconds;
+}
+
+/** What was on the line though nobody had asked. */
+export interface Unasked {
+  readonly size: number;
+  /** Its first bytes. */
+  readonly begins: Uint8Array;
+  /** It stopped in the middle of a reply, or did not stop: more of it may come. */
+  readonly unfinished: boolean;
+}
+
+/** More than this is not waited out. */
+const mostUnasked = 1024 * 1024;
+
+/**
+ * Messages out and replies in over one connection, with the ends of line, the gap and the trace. It knows
+ * nothing of which reply belongs to which message.
+ */
+export class Line {
+  readonly address: string;
+  readonly #connection: Connection;
+  readonly #wire: Wire;
+  readonly #clock: Clock;
+  readonly #trace: Trace | undefined;
+  readonly #reader: ReplyReader;
+  #quietSince = -Infinity;
+  #sentAt = -Infinity;
+  /** What comes after a wait is over is not stamped as if it had come within it. */
+  #notBefore = -Infinity;
+
+  constructor(connection: Connection, wire: Wire, clock: Clock, trace?: Trace) {
+    this.address = connection.address;
+    this.#connection = connection;
+    this.#wire = wire;
+    this.#clock = clock;
+    this.#trace = trace;
+    this.#reader = new ReplyReader(connection.address, wire.replyEnd);
+  }
+
+  get sentAt(): Seconds {
+    return this.#sentAt;
+  }
+
+  /** @throws ConnectionLostError */
+  async send(message: string): Promise<void> {
+    const pause = this.#quietSince + this.#wire.gap - this.#clock.now();
+    if (pause > 0) await this.#clock.sleep(pause);
+    const bytes = Buffer.from(message + this.#wire.sendEnd, 'latin1');
+    await this.#connection.write(bytes);
+    this.#sentAt = this.#quietSince = this.#clock.now();
+    this.#trace?.({ t: this.#sentAt, direction: 'sent', bytes });
+  }
+
+  /**
+   * The next reply as `cut` takes it from the reader, or undefined when it did not come in time.
+   * @throws ConnectionLostError, and whatever `cut` throws
+   */
+  async reply<Reply>(
+    cut: (reader: ReplyReader) => Reply | undefined,
+    { since, silence, atMost }: Patience,
+  ): Promise<Reply | undefined> {
+    const end = since + atMost;
+    let deadline = Math.min(since + silence, end);
+    for (;;) {
+      const reply = cut(this.#reader);
+      if (reply !== undefined) return reply;
+      const left = deadline - this.#clock.now();
+      const bytes = left > 0 ? await this.#connection.receive(left) : undefined;
+      if (bytes === undefined) {
+        this.#notBefore = deadline + 1e-6;
+        return undefined;
+      }
+      this.#received(bytes, Math.min(this.#clock.now(), deadline));
+      this.#reader.push(bytes);
+      deadline = Math.min(this.#clock.now() + silence, end);
+    }
+  }
+
+  /** What has come of a reply that is not whole. */
+  begun(): Uint8Array {
+    return this.#reader.discard();
+  }
+
+  /** Throws away what is on the line, without waiting for more. */
+  async clear(): Promise<Unasked> {
+    let last = this.#reader.discard();
+    let begins = last;
+    let size = last.length;
+    while (size <= mostUnasked) {
+      const bytes = await this.#connection.receive(0);
+      if (bytes === undefined) break;
+      this.#received(bytes, Math.max(this.#clock.now(), this.#notBefore));
+      if (size === 0) begins = bytes;
+      size += bytes.length;
+      last = bytes;
+    }
+    return { size, begins, unfinished: size > mostUnasked || !this.#isWhole(last) };
+  }
+
+  #received(bytes: Uint8Array, t: Seconds): void {
+    this.#quietSince = t;
+    this.#trace?.({ t, direction: 'received', bytes });
+  }
+
+  #isWhole(bytes: Uint8Array): boolean {
+    const text = Buffer.from(bytes.subarray(-16)).toString('latin1');
+    return text === '' || text.endsWith(this.#wire.replyEnd) || text.endsWith('\n');
+  }
+}

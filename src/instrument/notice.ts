@@ -1,0 +1,27 @@
+import type { ScpiError } from './scpi-error.js';
+
+/** What an instrument did that nobody asked for; `shown` is escaped and cut. */
+export type Notice =
+  | { readonly kind: 'unasked-bytes'; readonly shown: string; readonly size: number }
+  | { readonly kind: 'out-of-step'; readonly question: string }
+  | { readonly kind: 'late-reply'; readonly shown: string }
+  | { readonly kind: 'in-step-again' }
+  | { readonly kind: 'stale-error'; readonly entry: ScpiError };
+
+/** Told in words for people, and as facts for programs. */
+export type OnNotice = (text: string, notice: Notice) => void;
+
+export function noticeText(address: string, notice: Notice): string {
+  switch (notice.kind) {
+    case 'unasked-bytes':
+      return `${address} sent ${notice.size} bytes that nobody had asked for: "${notice.shown}"`;
+    case 'out-of-step':
+      return `${address} left "${notice.question}" unanswered; before the next question it must get back in step`;
+    case 'late-reply':
+      return `${address} sent "${notice.shown}" too late; it is thrown away`;
+    case 'in-step-again':
+      return `${address} is in step again`;
+    case 'stale-error':
+      return `${address} had an error from before: ${notice.entry.number} "${notice.entry.text}"`;
+  }
+}

@@ -1,0 +1,54 @@
+import type { DriverReading } from '../files/driver.js';
+import { ReplyNotUnderstoodError } from './reply-errors.js';
+import { parseScpiNumber, type Measurement } from './scpi-number.js';
+
+export interface About {
+  readonly address: string;
+  readonly question: string;
+}
+
+/** No reading is longer; the patterns of driver files are not let loose on more. */
+const longest = 1000;
+
+const no = /^(?:.*[^A-Z0-9.])?(?:[+-]?0+|OFF|FALSE|NO)$/i;
+
+/**
+ * The number in a reply: the whole reply, or what the driver's pattern calls `value`.
+ * @throws ReplyNotUnderstoodError
+ */
+export function readNumber(
+  reply: string,
+  reading: Extract<DriverReading, { kind: 'number' }>,
+  about: About,
+): Measurement {
+  if (reading.pattern === undefined) return parseScpiNumber(reply, about);
+  const value = reply.length <= longest ? reading.pattern.exec(reply.trim())?.groups?.['value'] : undefined;
+  if (value === undefined) {
+    throw new ReplyNotUnderstoodError({
+      ...about,
+      reply,
+      expected: `a reply that fits /${reading.pattern.source}/`,
+    });
+  }
+  return parseScpiNumber(value, about);
+}
+
+/**
+ * Yes or no. Yes is what the driver says; no must be said as well (`0`, `OFF`, `FALSE` or `NO`, alone or at
+ * the end): a reply that makes no sense must never stand for "the input is off".
+ * @throws ReplyNotUnderstoodError
+ */
+export function readFlag(
+  reply: string,
+  reading: Extract<DriverReading, { kind: 'flag' }>,
+  about: About,
+): boolean {
+  const text = reply.length <= longest ? reply.trim() : '';
+  if (text.search(reading.trueWhen) !== -1) return true;
+  if (no.test(text)) return false;
+  throw new ReplyNotUnderstoodError({
+    ...about,
+    reply,
+    expected: `a reply that fits /${reading.trueWhen.source}/, or 0, OFF, FALSE or NO,`,
+  });
+}

@@ -1,0 +1,96 @@
+import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+import type { Seconds } from '../quantity/quantity.js';
+import { visible } from './visible.js';
+
+/** A question was not answered in time. */
+export class InstrumentSilentError extends RailproofError {
+  readonly code = 'INSTRUMENT_SILENT';
+  readonly exitCode = exitCodes.instrument;
+  readonly address: string;
+  readonly question: string;
+  readonly timeout: Seconds;
+  /** What had come of a reply that never ended, with control characters escaped; empty when nothing came. */
+  readonly begun: string;
+
+  constructor(facts: { address: string; question: string; timeout: Seconds; begun: Uint8Array }) {
+    const begun = visible(facts.begun);
+    const within = `within ${Math.round(facts.timeout * 1000)} ms`;
+    super(
+      begun === ''
+        ? `${facts.address} did not answer "${visible(facts.question)}" ${within}`
+        : `${facts.address} did not finish its answer to "${visible(facts.question)}" ${within}: "${begun}"`,
+      {
+        advice:
+          begun === ''
+            ? 'Is it switched on, is the cable in, is remote control enabled, are the driver and the line settings (baud, ends of line) right?'
+            : "Compare the driver's reply-end with how this instrument ends a reply; a slow line may need a longer timeout.",
+      },
+    );
+    this.address = facts.address;
+    this.question = facts.question;
+    this.timeout = facts.timeout;
+    this.begun = begun;
+  }
+}
+
+/** A reply came and is not what was expected. */
+export class ReplyNotUnderstoodError extends RailproofError {
+  readonly code = 'REPLY_NOT_UNDERSTOOD';
+  readonly exitCode = exitCodes.instrument;
+  /** With control characters escaped, cut to about 80 characters. */
+  readonly reply: string;
+  readonly expected: string;
+  readonly address: string | undefined;
+  readonly question: string | undefined;
+
+  constructor(facts: { reply: Uint8Array | string; expected: string; address?: string; question?: string }) {
+    const reply = visible(facts.reply);
+    const who = facts.address === undefined ? '' : `${facts.address} answered `;
+    const what = facts.question === undefined ? '' : `"${visible(facts.question)}" with `;
+    super(`${who}${what}"${reply}" where ${facts.expected} was expected`, {
+      advice:
+        'Does the driver fit this instrument? "railproof drivers --try" walks through it message by message; a reply with a unit or a prefix needs a pattern in the driver.',
+    });
+    this.reply = reply;
+    this.expected = facts.expected;
+    this.address = facts.address;
+    this.question = facts.question;
+  }
+}
+
+/** More came than any reply may hold. */
+export class ReplyTooLongError extends RailproofError {
+  readonly code = 'REPLY_TOO_LONG';
+  readonly exitCode = exitCodes.instrument;
+  readonly address: string;
+  readonly limit: number;
+  readonly begins: string;
+
+  constructor(facts: { address: string; limit: number; begins: Uint8Array }) {
+    const begins = visible(facts.begins);
+    super(`${facts.address} sent a reply of more than ${facts.limit} bytes: "${begins}"`, {
+      advice:
+        "Is this the instrument that the driver is for? Compare the baud rate and the driver's reply-end with its manual.",
+    });
+    this.address = facts.address;
+    this.limit = facts.limit;
+    this.begins = begins;
+  }
+}
+
+/** After a question without an answer nobody can tell which question the next reply belongs to. */
+export class OutOfStepError extends RailproofError {
+  readonly code = 'OUT_OF_STEP';
+  readonly exitCode = exitCodes.instrument;
+  readonly address: string;
+  readonly identify: string;
+
+  constructor(facts: { address: string; identify: string; reason: string }) {
+    super(`${facts.address} is out of step: ${facts.reason}`, {
+      advice:
+        'Switch the instrument off and on, check its cable, and begin again. If it happens often, give the driver a longer timeout or gap.',
+    });
+    this.address = facts.address;
+    this.identify = facts.identify;
+  }
+}
