@@ -18,7 +18,7 @@ export const mayImport = {
   run: ['errors', 'clock', 'quantity', 'files', 'record', 'bench', 'steps'],
   simulation: ['errors', 'clock', 'quantity', 'files', 'instrument', 'circuit'],
   analysis: ['errors', 'quantity', 'statistics', 'circuit', 'record'],
-  judgement: ['errors', 'quantity', 'statistics', 'analysis'],
+  judgement: ['errors', 'quantity', 'statistics', 'record', 'analysis'],
   report: ['errors', 'quantity', 'record', 'analysis', 'judgement'],
 };
 /** Rooms that compute only: no ports, files, clocks or processes. */

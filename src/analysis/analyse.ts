@@ -1,0 +1,57 @@
+import { answerFindings } from './answers.js';
+import { heldPoints, stepsOf } from './curve.js';
+import { dropoutBracket, dropoutFindings } from './dropout.js';
+import type { Evidence } from './evidence.js';
+import type { Finding } from './finding.js';
+import { leadFindings } from './lead-resistance.js';
+import { limitStyleFindings } from './limit-style.js';
+import { onsetFindings } from './onset.js';
+import { openCircuitFindings } from './open-circuit.js';
+import { recommendedFindings } from './recommended-current.js';
+import { recoveryFindings } from './recovery.js';
+import { regulationFindings } from './regulation.js';
+import { steadinessFindings } from './steadiness.js';
+import { usableFindings } from './usable-current.js';
+
+/**
+ * Everything that a record's evidence shows, in the order in which a reader wants it. Pure: the same
+ * record gives the same findings, whoever made it and whenever. What was not measured is not there.
+ */
+export function analyse(evidence: Evidence): readonly Finding[] {
+  const held = heldPoints(evidence.steps);
+  const unsteady = steadinessFindings(evidence, held);
+  const steady = held.filter((point) => point.current < numberOf(unsteady, Number.POSITIVE_INFINITY));
+  const onset = onsetFindings(evidence, steady);
+  const ramp = new Set(stepsOf(evidence, 'load-ramp').map((step) => step.step));
+  const regulated = steady.filter(
+    (point) => ramp.has(point.step) && point.current < numberOf(onset, Number.POSITIVE_INFINITY),
+  );
+  const idle = openCircuitFindings(evidence);
+  const regulation = regulationFindings(evidence, regulated, idle.length > 0);
+  const dropout = dropoutFindings(evidence, dropoutBracket(evidence));
+  const openCircuit = [...idle, ...regulation].find((finding) => finding.name === 'open-circuit-voltage');
+  const style = limitStyleFindings(
+    evidence,
+    dropout.length === 0 ? undefined : numberOf(dropout, Number.NaN),
+    typeof openCircuit?.value === 'number' ? openCircuit.value : undefined,
+  );
+  const usable = usableFindings(evidence, { dropout: dropout[0], unsteady: unsteady[0], held });
+  return [
+    ...usable,
+    ...recommendedFindings(evidence, usable[0]),
+    ...idle,
+    ...regulation,
+    ...onset,
+    ...unsteady,
+    ...dropout,
+    ...style,
+    ...recoveryFindings(evidence),
+    ...leadFindings(evidence),
+    ...answerFindings(evidence),
+  ];
+}
+
+function numberOf(findings: readonly Finding[], otherwise: number): number {
+  const value = findings[0]?.value;
+  return typeof value === 'number' ? value : otherwise;
+}

@@ -1,0 +1,18 @@
+import type { Evidence } from './evidence.js';
+import { type Finding, inWords } from './finding.js';
+
+/** What the operator was asked for, under the name the procedure gave it. */
+export function answerFindings(evidence: Evidence): readonly Finding[] {
+  return stepsWithAnswers(evidence).map(({ step, answer }) => {
+    const words = inWords(answer.name, answer.answer, { step, note: 'as the operator read it' });
+    return answer.value === undefined || answer.dimension === undefined
+      ? words
+      : { ...words, value: answer.value, dimension: answer.dimension };
+  });
+}
+
+function stepsWithAnswers(evidence: Evidence): { step: number; answer: Evidence['steps'][number]['answers'][number] }[] {
+  return evidence.steps
+    .filter((step) => step.kind === 'operator')
+    .flatMap((step) => step.answers.map((answer) => ({ step: step.step, answer })));
+}

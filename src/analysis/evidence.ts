@@ -1,0 +1,157 @@
+import type { Amperes, Seconds, Volts } from '../quantity/quantity.js';
+import type {
+  Answered,
+  Ended,
+  GuardTripped,
+  PointBegan,
+  PointOutcome,
+  ReadingTaken,
+  Recovery,
+  TimedEvent,
+} from '../record/journal-event.js';
+import type { RunHeader } from '../record/run-header.js';
+import { RunningMoments } from '../statistics/running-moments.js';
+
+/** What a journal amounts to: its points, each boiled down to a few numbers, however many readings it had. */
+export interface Evidence {
+  readonly header: RunHeader;
+  readonly steps: readonly StepEvidence[];
+  /** Undefined when the record was cut off. */
+  readonly ended: Ended | undefined;
+  readonly tripped: GuardTripped | undefined;
+  readonly readings: number;
+}
+
+export interface StepEvidence {
+  readonly step: number;
+  readonly kind: string;
+  readonly settings: Readonly<Record<string, unknown>>;
+  readonly points: readonly PointEvidence[];
+  readonly recoveries: readonly Recovery[];
+  readonly answers: readonly Answered[];
+}
+
+export interface PointEvidence {
+  readonly point: number;
+  readonly phase: PointBegan['phase'];
+  readonly set: PointBegan['set'];
+  readonly t: Seconds;
+  /** Undefined when the record was cut off in the middle of it. */
+  readonly outcome: PointOutcome | undefined;
+  readonly moduleVoltage: RunningMoments;
+  readonly loadVoltage: RunningMoments;
+  readonly current: RunningMoments;
+  /** Of an overload, the first samples one by one: an average would hide how the module limits. */
+  readonly samples: readonly { readonly voltage: Volts; readonly current: Amperes }[];
+}
+
+type Growing<T> = { -readonly [Key in keyof T]: T[Key] extends readonly (infer Item)[] ? Item[] : T[Key] };
+
+const mostSamples = 500;
+
+/** Takes the events of a journal one after the other; memory grows with the points, not with the readings. */
+export class EvidenceCollector {
+  readonly #header: RunHeader;
+  readonly #steps: Growing<StepEvidence>[] = [];
+  #point: Growing<PointEvidence> | undefined;
+  #loadVoltage = Number.NaN;
+  #meterVoltage = Number.NaN;
+  #ended: Ended | undefined;
+  #tripped: GuardTripped | undefined;
+  #readings = 0;
+
+  constructor(header: RunHeader) {
+    this.#header = header;
+  }
+
+  add(event: TimedEvent): void {
+    const step = this.#steps.at(-1);
+    switch (event.event) {
+      case 'reading':
+        this.#addReading(event);
+        return;
+      case 'step-began': {
+        const settings = this.#header.steps[event.step - 1]?.settings ?? {};
+        this.#steps.push({ step: event.step, kind: event.kind, settings, points: [], recoveries: [], answers: [] });
+        return;
+      }
+      case 'point-began':
+        this.#point = newPoint(event, event.t);
+        step?.points.push(this.#point);
+        return;
+      case 'point-ended':
+        if (this.#point) this.#point.outcome = event.outcome;
+        this.#point = undefined;
+        return;
+      case 'recovery':
+        step?.recoveries.push(event);
+        return;
+      case 'answer':
+        step?.answers.push(event);
+        return;
+      case 'guard-tripped':
+        this.#tripped ??= event;
+        return;
+      case 'ended':
+        this.#ended = event;
+        return;
+      case 'opened':
+      case 'instrument':
+      case 'caution':
+      case 'input':
+      case 'prompt':
+      case 'notice':
+      case 'step-ended':
+        return;
+    }
+  }
+
+  result(): Evidence {
+    return {
+      header: this.#header,
+      steps: this.#steps,
+      ended: this.#ended,
+      tripped: this.#tripped,
+      readings: this.#readings,
+    };
+  }
+
+  /** The load's current comes last in a sample, so the sample is whole when it is there. */
+  #addReading({ of, what, value }: ReadingTaken): void {
+    this.#readings += 1;
+    const point = this.#point;
+    if (point === undefined) return;
+    const number = value ?? Number.NaN;
+    if (of === 'meter' && what === 'voltage') this.#meterVoltage = number;
+    if (of === 'load' && what === 'voltage') this.#loadVoltage = number;
+    if (of !== 'load' || what !== 'current') return;
+    const voltage = this.#moduleVoltage(number);
+    if (!Number.isNaN(voltage)) point.moduleVoltage.add(voltage);
+    if (!Number.isNaN(this.#loadVoltage)) point.loadVoltage.add(this.#loadVoltage);
+    if (!Number.isNaN(number)) point.current.add(number);
+    if (point.phase === 'overload' && point.samples.length < mostSamples) {
+      point.samples.push({ voltage, current: number });
+    }
+    this.#loadVoltage = Number.NaN;
+    this.#meterVoltage = Number.NaN;
+  }
+
+  #moduleVoltage(current: Amperes): Volts {
+    const { voltageFrom, leads } = this.#header.bench;
+    return voltageFrom === 'meter-at-module' ? this.#meterVoltage : this.#loadVoltage + current * leads.resistance;
+  }
+}
+
+function newPoint({ point, phase, set }: PointBegan, t: Seconds): Growing<PointEvidence> {
+  return {
+    point,
+    phase,
+    set,
+    t,
+    outcome: undefined,
+    moduleVoltage: new RunningMoments(),
+    loadVoltage: new RunningMoments(),
+    current: new RunningMoments(),
+    samples: [],
+  };
+}

@@ -1,0 +1,30 @@
+import type { Dimension } from '../quantity/quantity.js';
+
+/** Every finding there can be, and what it measures. A name that ends in `*` stands for one per module. */
+export const findingNames = {
+  'open-circuit-voltage': 'voltage',
+  'droop-resistance': 'resistance',
+  'load-regulation': 'ratio',
+  'lead-resistance': 'resistance',
+  'limit-onset-current': 'current',
+  'dropout-current': 'current',
+  'limit-style': 'word',
+  'short-circuit-current': 'current',
+  'unsteady-above-current': 'current',
+  'recovery-time': 'time',
+  'usable-current': 'current',
+  'recommended-current': 'current',
+  'temperature-rise': 'temperature-difference',
+  'thermal-time-constant': 'time',
+  'thermal-drift': 'voltage-rate',
+  'earth-resistance': 'resistance',
+  'earth-relation': 'word',
+  imbalance: 'ratio',
+  'hogging-module': 'word',
+  'share-of-*': 'ratio',
+  'recommended-ballast': 'resistance',
+  'group-current': 'current',
+  'stack-voltage': 'voltage',
+  'weakest-module': 'word',
+  'float-voltage-of-*': 'voltage',
+} as const satisfies Record<string, Dimension | 'word'>;

@@ -1,0 +1,68 @@
+import type { Dimension, Ratio } from '../quantity/quantity.js';
+import { combine, type Contribution, interval } from '../statistics/uncertainty-budget.js';
+
+/** A named result, and where it came from. */
+export interface Finding {
+  readonly name: string;
+  /** In the unit of its dimension, or a word. */
+  readonly value: number | string;
+  readonly dimension: Dimension | null;
+  readonly standardUncertainty: number | null;
+  /** 95 %, by Student's t at the effective degrees of freedom. */
+  readonly interval: readonly [number, number] | null;
+  /** The step whose readings it rests on, counted from 1. */
+  readonly step: number | null;
+  /** What a reader must know besides; empty when there is nothing. */
+  readonly note: string;
+  readonly budget: readonly Contribution[];
+  /** How a recommendation was worked out. */
+  readonly factors: readonly Factor[];
+}
+
+/** One line of a derating: each factor multiplies, and says why. */
+export interface Factor {
+  readonly name: string;
+  readonly factor: Ratio;
+  readonly reason: string;
+}
+
+interface Circumstances {
+  readonly step: number | null;
+  readonly note?: string;
+}
+
+/** A measured quantity with its uncertainty worked out of the contributions (JCGM 100:2008, 5 and G.4). */
+export function measured(
+  name: string,
+  dimension: Dimension,
+  value: number,
+  budget: readonly Contribution[],
+  { step, note = '' }: Circumstances,
+): Finding {
+  const combined = combine(budget);
+  return {
+    name,
+    value,
+    dimension,
+    standardUncertainty: combined.standardUncertainty,
+    interval: interval(value, combined),
+    step,
+    note,
+    budget,
+    factors: [],
+  };
+}
+
+export function inWords(name: string, word: string, { step, note = '' }: Circumstances): Finding {
+  return {
+    name,
+    value: word,
+    dimension: null,
+    standardUncertainty: null,
+    interval: null,
+    step,
+    note,
+    budget: [],
+    factors: [],
+  };
+}

@@ -1,0 +1,45 @@
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Evidence } from './evidence.js';
+import type { Factor, Finding } from './finding.js';
+
+/**
+ * `recommended-current` for continuous use: the usable current's 95 % lower bound × margin × ambient
+ * factor, and never above the nameplate. Each factor is a line with its reason.
+ */
+export function recommendedFindings(evidence: Evidence, usable: Finding | undefined): readonly Finding[] {
+  const rated = evidence.header.modules[0]?.rated;
+  if (usable?.interval == null || rated === undefined || typeof usable.value !== 'number') return [];
+  const { margin } = evidence.header.derating;
+  const low = Math.max(0, usable.interval[0]);
+  const derated = low * margin;
+  const capped = Math.min(derated, rated.current);
+  const factors: Factor[] = [
+    {
+      name: 'lower bound',
+      factor: low / usable.value,
+      reason: `from the usable current to its 95 % lower bound, ${formatQuantity(low, 'current', { significant: 4 })}`,
+    },
+    { name: 'margin', factor: margin, reason: 'asked for by the procedure, for ageing and warmer days' },
+    { name: 'ambient', factor: 1, reason: 'no ambient line was given; it holds for the surroundings of the test' },
+  ];
+  if (derated > rated.current) {
+    factors.push({
+      name: 'nameplate',
+      factor: rated.current / derated,
+      reason: `never above the nameplate's ${formatQuantity(rated.current, 'current')}`,
+    });
+  }
+  return [
+    {
+      name: 'recommended-current',
+      value: capped,
+      dimension: 'current',
+      standardUncertainty: null,
+      interval: null,
+      step: usable.step,
+      note: derated > rated.current ? 'the nameplate sets it' : 'the measured limit sets it',
+      budget: [],
+      factors,
+    },
+  ];
+}

@@ -1,0 +1,35 @@
+import { rectangular } from '../statistics/uncertainty-budget.js';
+import type { Evidence } from './evidence.js';
+import { type Finding, measured } from './finding.js';
+import { promised } from './promised-errors.js';
+
+/**
+ * `recovery-time`: the slowest of the recoveries after an overload, from the load's going off to the
+ * voltage's being back; between the last look without it and the first with it.
+ */
+export function recoveryFindings(evidence: Evidence): readonly Finding[] {
+  const recoveries = evidence.steps.flatMap((step) =>
+    step.recoveries
+      .filter((recovery) => recovery.outcome === 'came-back')
+      .map(({ after, within }) => ({ step: step.step, after, within })),
+  );
+  const slowest = recoveries.reduce<(typeof recoveries)[number] | undefined>(
+    (slow, one) => (slow === undefined || one.within > slow.within ? one : slow),
+    undefined,
+  );
+  if (slowest === undefined) return [];
+  return [
+    measured(
+      'recovery-time',
+      'time',
+      (slowest.after + slowest.within) / 2,
+      [promised('between two looks', rectangular((slowest.within - slowest.after) / 2))],
+      { step: slowest.step, note: `the slowest of ${recoveries.length}` },
+    ),
+  ];
+}
+
+/** Whether the module ever stayed off after an overload. */
+export function latched(evidence: Evidence): boolean {
+  return evidence.steps.some((step) => step.recoveries.some((recovery) => recovery.outcome !== 'came-back'));
+}

@@ -1,0 +1,104 @@
+import type { Amperes } from '../quantity/quantity.js';
+import { fitLine, type LineFit } from '../statistics/line-fit.js';
+import type { CurvePoint } from './curve.js';
+import type { Evidence } from './evidence.js';
+import { type Finding, measured } from './finding.js';
+import { moduleVoltageErrors, promised, promisedErrors } from './promised-errors.js';
+
+const fewestPoints = 4;
+/** The line may be stretched by this part beyond its last point to reach the rated current. */
+const stretch = 1.05;
+
+/**
+ * `droop-resistance`, `load-regulation` and, where no open-circuit step was made, `open-circuit-voltage`:
+ * a straight line V = V0 − R·I through the regulated points, with the residuals' uncertainties
+ * (JCGM 100:2008, H.3) and the instruments' promises. A gain error scales the slope, whether it is the
+ * voltage's or the current's; an offset leaves it alone; both move V0.
+ * @param points held, steady, below the onset of the limit; by rising current.
+ */
+export function regulationFindings(
+  evidence: Evidence,
+  points: readonly CurvePoint[],
+  openCircuitKnown: boolean,
+): readonly Finding[] {
+  if (points.length < fewestPoints) return [];
+  const fit = fitLine(
+    points.map((point) => point.current),
+    points.map((point) => point.voltage),
+  );
+  const step = points[0]?.step ?? null;
+  const droop = droopFinding(evidence, fit, step);
+  const reaches = (points.at(-1)?.current ?? 0) * stretch;
+  return [
+    ...(openCircuitKnown ? [] : [interceptFinding(evidence, fit, step)]),
+    droop,
+    ...regulationFinding(evidence, droop, reaches),
+  ];
+}
+
+function droopFinding(evidence: Evidence, fit: LineFit, step: number | null): Finding {
+  const { instrument: voltage, leads } = moduleVoltageErrors(evidence.header);
+  const current = promisedErrors(evidence.header, 'load', 'current');
+  const droop = -fit.slope;
+  return measured(
+    'droop-resistance',
+    'resistance',
+    droop,
+    [
+      {
+        name: 'scatter about the line',
+        kind: 'A',
+        uncertainty: scatter(fit, voltage.resolution) / Math.sqrt(fit.spreadX),
+        degreesOfFreedom: fit.degreesOfFreedom,
+      },
+      promised(`${voltage.of}, gain`, voltage.gain * droop),
+      promised(`${current.of}, gain`, current.gain * droop),
+      ...(leads === 0 ? [] : [promised('resistance of the leads', leads)]),
+    ],
+    { step, note: `straight line through ${fit.points} points` },
+  );
+}
+
+function interceptFinding(evidence: Evidence, fit: LineFit, step: number | null): Finding {
+  const { instrument: voltage } = moduleVoltageErrors(evidence.header);
+  const current = promisedErrors(evidence.header, 'load', 'current');
+  const share = Math.sqrt(1 / fit.points + fit.meanX ** 2 / fit.spreadX);
+  return measured(
+    'open-circuit-voltage',
+    'voltage',
+    fit.intercept,
+    [
+      {
+        name: 'scatter about the line',
+        kind: 'A',
+        uncertainty: scatter(fit, voltage.resolution) * share,
+        degreesOfFreedom: fit.degreesOfFreedom,
+      },
+      promised(`${voltage.of}, gain`, voltage.gain * fit.intercept),
+      promised(`${voltage.of}, offset`, voltage.offset),
+      promised(`${current.of}, offset`, current.offset * fit.slope),
+    ],
+    { step, note: 'by extending the line to no load' },
+  );
+}
+
+/** IEC 61204: the fall of the voltage from no load to rated current, over the rated voltage. */
+function regulationFinding(evidence: Evidence, droop: Finding, reaches: Amperes): readonly Finding[] {
+  const rated = evidence.header.modules[0]?.rated;
+  if (rated === undefined || reaches < rated.current) return [];
+  const perOhm = rated.current / rated.voltage;
+  return [
+    measured(
+      'load-regulation',
+      'ratio',
+      (droop.value as number) * perOhm,
+      droop.budget.map((line) => ({ ...line, uncertainty: line.uncertainty * perOhm })),
+      { step: droop.step, note: 'from no load to rated current, of the rated voltage' },
+    ),
+  ];
+}
+
+/** Residuals smaller than the last digit say nothing about what the last digit hides. */
+function scatter(fit: LineFit, resolution: number): number {
+  return Math.max(fit.residualDeviation, resolution);
+}

@@ -1,0 +1,47 @@
+import type { Bench } from '../files/bench.js';
+import type { Driver } from '../files/driver.js';
+import type { Amperes, Volts, Watts } from '../quantity/quantity.js';
+
+/** What may never be exceeded on this bench, and who says so. */
+export interface Ceilings {
+  readonly voltage: Ceiling<Volts>;
+  readonly current: Ceiling<Amperes>;
+  readonly power: Ceiling<Watts>;
+}
+
+export interface Ceiling<Value extends number = number> {
+  readonly value: Value;
+  /** In words, for messages: `the bench`, `the load's rating`. */
+  readonly setBy: string;
+}
+
+/** The strictest of the bench's limits and the ratings of the instruments that carry the quantity. */
+export function ceilingsOf(bench: Bench, drivers: { readonly load: Driver; readonly meter?: Driver | undefined }): Ceilings {
+  const { load, meter } = drivers;
+  return {
+    voltage: strictest(
+      { value: bench.limits.voltage, setBy: 'the bench' },
+      rating(load.ratings.voltage, "the load's rating"),
+      rating(meter?.ratings.voltage, "the meter's rating"),
+    ),
+    current: strictest(
+      { value: bench.limits.current, setBy: 'the bench' },
+      rating(load.ratings.current, "the load's rating"),
+    ),
+    power: strictest(
+      { value: bench.limits.power, setBy: 'the bench' },
+      rating(load.ratings.power, "the load's rating"),
+    ),
+  };
+}
+
+function rating(value: number | undefined, setBy: string): Ceiling | undefined {
+  return value === undefined ? undefined : { value, setBy };
+}
+
+function strictest(first: Ceiling, ...others: readonly (Ceiling | undefined)[]): Ceiling {
+  return others.reduce<Ceiling>(
+    (least, other) => (other !== undefined && other.value < least.value ? other : least),
+    first,
+  );
+}

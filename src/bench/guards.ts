@@ -1,0 +1,75 @@
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Volts } from '../quantity/quantity.js';
+import { GuardTrippedError } from './bench-error.js';
+import type { Ceilings } from './ceilings.js';
+import type { Taken } from './sample.js';
+
+export interface GuardLimits extends Ceilings {
+  /** The nameplate's; a voltage further below zero than a fiftieth of it is reversed polarity. */
+  readonly ratedVoltage: Volts;
+}
+
+/**
+ * Looks at everything that was read at one moment.
+ * @throws GuardTrippedError naming the guard, the reading and who set the limit.
+ */
+export function guard(taken: readonly Taken[], limits: GuardLimits): void {
+  for (const { of, what, measurement } of taken) {
+    if (measurement.kind === 'overload') {
+      throw new GuardTrippedError(
+        `over-${what}`,
+        `the ${of} reads ${what} overload`,
+        'what is connected is beyond its range: check the leads and the module',
+      );
+    }
+    if (measurement.kind !== 'value') continue;
+    if (what === 'voltage') guardVoltage(of, measurement.value, limits);
+    if (what === 'current') guardCurrent(of, measurement.value, limits);
+  }
+  guardPower(taken, limits);
+}
+
+function guardVoltage(of: string, volts: number, limits: GuardLimits): void {
+  if (volts > limits.voltage.value) {
+    throw new GuardTrippedError(
+      'over-voltage',
+      `the ${of} reads ${formatQuantity(volts, 'voltage')} and ${limits.voltage.setBy} allows ${formatQuantity(limits.voltage.value, 'voltage')}`,
+      'the module gives more than this bench is made for',
+    );
+  }
+  if (volts < -limits.ratedVoltage / 50) {
+    throw new GuardTrippedError(
+      'reversed-polarity',
+      `the ${of} reads ${formatQuantity(volts, 'voltage')}: the polarity is reversed`,
+      'swap the leads at the module',
+    );
+  }
+}
+
+/** A tenth above the ceiling: the set-point is kept below it, so more than a load's own error is a fault. */
+const overCurrentFactor = 1.1;
+
+function guardCurrent(of: string, amps: number, limits: GuardLimits): void {
+  if (amps <= limits.current.value * overCurrentFactor) return;
+  throw new GuardTrippedError(
+    'over-current',
+    `the ${of} reads ${formatQuantity(amps, 'current')} and ${limits.current.setBy} allows ${formatQuantity(limits.current.value, 'current')}`,
+    'the load does not keep its set current',
+  );
+}
+
+function guardPower(taken: readonly Taken[], limits: GuardLimits): void {
+  const power = valueOf(taken, 'load', 'voltage') * valueOf(taken, 'load', 'current');
+  if (!(power > limits.power.value)) return;
+  throw new GuardTrippedError(
+    'over-power',
+    `the load takes ${formatQuantity(power, 'power')} and ${limits.power.setBy} allows ${formatQuantity(limits.power.value, 'power')}`,
+    'lower what the procedure asks, or use a larger load',
+  );
+}
+
+/** Not a number when it was not read. */
+export function valueOf(taken: readonly Taken[], of: string, what: string): number {
+  const found = taken.find((one) => one.of === of && one.what === what);
+  return found?.measurement.kind === 'value' ? found.measurement.value : Number.NaN;
+}

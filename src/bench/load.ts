@@ -1,0 +1,89 @@
+import type { Instrument } from '../instrument/instrument.js';
+import type { Measurement } from '../instrument/scpi-number.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Amperes } from '../quantity/quantity.js';
+import { BeyondCeilingError, DisobeyedError } from './bench-error.js';
+import type { Ceilings } from './ceilings.js';
+
+export type InputState = 'on' | 'off';
+
+/** Told of each change of the input, after it was read back. */
+export type InputListener = (state: InputState, confirmed: boolean) => void;
+
+/** An electronic load that keeps the bench's ceilings and reads its input's state back. */
+export class Load {
+  readonly instrument: Instrument;
+  readonly #ceilings: Ceilings;
+  readonly #onInput: InputListener;
+
+  constructor(instrument: Instrument, ceilings: Ceilings, onInput: InputListener) {
+    this.instrument = instrument;
+    this.#ceilings = ceilings;
+    this.#onInput = onInput;
+  }
+
+  /** Constant-current mode at 0 A, the load's own protections set where it has them. The input is not touched. */
+  async prepare(): Promise<void> {
+    await this.instrument.perform('current-mode');
+    await this.setCurrent(0);
+    if (this.instrument.has('protect-current')) {
+      await this.instrument.perform('protect-current', { amps: this.#ceilings.current.value });
+    }
+    if (this.instrument.has('protect-voltage')) {
+      await this.instrument.perform('protect-voltage', { volts: this.#ceilings.voltage.value });
+    }
+  }
+
+  /** @throws BeyondCeilingError before anything is sent. */
+  async setCurrent(amps: Amperes): Promise<void> {
+    const ceiling = this.#ceilings.current;
+    if (!(amps <= ceiling.value)) {
+      throw new BeyondCeilingError(
+        formatQuantity(amps, 'current'),
+        formatQuantity(ceiling.value, 'current'),
+        ceiling.setBy,
+      );
+    }
+    await this.instrument.perform('set-current', { amps: Math.max(0, amps) });
+  }
+
+  /** @throws DisobeyedError when the load says that its input is still off. */
+  async inputOn(): Promise<void> {
+    await this.instrument.perform('input-on');
+    const confirmed = await this.isOn();
+    this.#onInput('on', confirmed);
+    if (!confirmed) throw new DisobeyedError(this.address, 'was told to switch its input on and says that it is off');
+  }
+
+  /** @throws DisobeyedError when the load says that its input is still on. */
+  async inputOff(): Promise<void> {
+    await this.instrument.perform('input-off');
+    const confirmed = !(await this.isOn());
+    this.#onInput('off', confirmed);
+    if (!confirmed) throw new DisobeyedError(this.address, 'was told to switch its input off and says that it is on');
+  }
+
+  /** Off by the driver's make-safe messages, whatever state the load was in; read back. */
+  async makeSafe(): Promise<void> {
+    await this.instrument.perform('make-safe');
+    const confirmed = !(await this.isOn());
+    this.#onInput('off', confirmed);
+    if (!confirmed) throw new DisobeyedError(this.address, 'was made safe and says that its input is on');
+  }
+
+  isOn(): Promise<boolean> {
+    return this.instrument.flag('input-state');
+  }
+
+  readVoltage(): Promise<Measurement> {
+    return this.instrument.read('voltage');
+  }
+
+  readCurrent(): Promise<Measurement> {
+    return this.instrument.read('current');
+  }
+
+  get address(): string {
+    return this.instrument.address;
+  }
+}

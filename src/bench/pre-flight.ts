@@ -1,0 +1,44 @@
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Volts } from '../quantity/quantity.js';
+import { PreFlightError } from './bench-error.js';
+import type { OpenBench } from './open-bench.js';
+import { valueOf } from './guards.js';
+
+/** @throws PreFlightError when the load's input is on before the run has begun. */
+export async function checkInputIsOff(bench: OpenBench): Promise<void> {
+  if (!(await bench.load.isOn())) return;
+  throw new PreFlightError(
+    `the input of the load at ${bench.load.address} is on`,
+    'somebody else may be using it; if not, `railproof safe --bench <file>` switches it off',
+  );
+}
+
+/** Part of the rated voltage by which the open-circuit voltage may differ before it is another module. */
+const tolerance = 0.25;
+/** Below this part of the rated voltage there is nothing there. */
+const nothing = 0.05;
+
+/**
+ * Reads the open-circuit voltage with the input off.
+ * @throws PreFlightError when it has the wrong sign or a size that this module can't have.
+ */
+export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): Promise<void> {
+  const taken = await bench.sample();
+  const volts = bench.meter === undefined ? valueOf(taken, 'load', 'voltage') : valueOf(taken, 'meter', 'voltage');
+  if (Number.isNaN(volts)) {
+    throw new PreFlightError('the voltage of the module could not be read', 'check the range and the leads of the meter');
+  }
+  const read = formatQuantity(volts, 'voltage');
+  if (volts < -rated * nothing) {
+    throw new PreFlightError(`the module reads ${read}`, 'the polarity is reversed: swap the leads at the module');
+  }
+  if (volts < rated * nothing) {
+    throw new PreFlightError(`the module reads ${read}`, 'is it plugged in and switched on, are the leads in place?');
+  }
+  if (Math.abs(volts - rated) > rated * tolerance) {
+    throw new PreFlightError(
+      `the module reads ${read} and its nameplate says ${formatQuantity(rated, 'voltage')}`,
+      'is this the right module file? Is the right module connected?',
+    );
+  }
+}

@@ -1,0 +1,153 @@
+import type { Amperes, Dimension, Seconds, Volts } from '../quantity/quantity.js';
+
+/**
+ * The journal: one JSON object a line, in the order in which things happened. `t` is monotonic seconds
+ * since the run began; the wall clock stands once, in `opened`. Steps, points and samples count from 1.
+ * All values are in the units V, A, Ω, °C, s.
+ */
+export type JournalEvent =
+  | Opened
+  | InstrumentAnswered
+  | CautionAcknowledged
+  | StepBegan
+  | PointBegan
+  | ReadingTaken
+  | PointEnded
+  | InputChanged
+  | Recovery
+  | Prompted
+  | Answered
+  | Noticed
+  | GuardTripped
+  | StepEnded
+  | Ended;
+
+export const journalFormat = 'railproof/journal 1';
+
+export interface Opened {
+  readonly event: 'opened';
+  readonly format: typeof journalFormat;
+  /** ISO 8601, UTC. */
+  readonly wallClock: string;
+}
+
+export interface InstrumentAnswered {
+  readonly event: 'instrument';
+  readonly role: string;
+  readonly address: string;
+  readonly identity: string;
+}
+
+export interface CautionAcknowledged {
+  readonly event: 'caution';
+  readonly name: string;
+  readonly by: 'operator' | '--yes';
+}
+
+export interface StepBegan {
+  readonly event: 'step-began';
+  readonly step: number;
+  readonly kind: string;
+}
+
+/**
+ * What a point is for: `idle` input off; `ramp` on the way up; `start`, `climb`, `halve` and `return`
+ * belong to a search; `steadiness` looks for the first unsteady current; `overload` is watched past the limit; `recovery` is after it.
+ */
+export type Phase = 'idle' | 'ramp' | 'start' | 'climb' | 'halve' | 'return' | 'steadiness' | 'overload' | 'recovery';
+
+export interface PointBegan {
+  readonly event: 'point-began';
+  readonly step: number;
+  readonly point: number;
+  readonly phase: Phase;
+  readonly set: { readonly current?: Amperes; readonly voltage?: Volts };
+}
+
+export interface ReadingTaken {
+  readonly event: 'reading';
+  readonly step: number;
+  readonly point: number;
+  readonly sample: number;
+  /** The instrument's role on the bench. */
+  readonly of: string;
+  readonly what: string;
+  /** Null when the instrument said that it has no value. */
+  readonly value: number | null;
+  readonly problem?: 'overload' | 'not-a-number';
+}
+
+/** `held`: the module kept its voltage and the load its current; `dropped`: not so. */
+export type PointOutcome = 'held' | 'dropped' | 'measured';
+
+export interface PointEnded {
+  readonly event: 'point-ended';
+  readonly step: number;
+  readonly point: number;
+  readonly outcome: PointOutcome;
+}
+
+export interface InputChanged {
+  readonly event: 'input';
+  readonly state: 'on' | 'off';
+  /** Read back from the load. */
+  readonly confirmed: boolean;
+}
+
+/** After an overload was taken away: back between `after` and `within` seconds, or not back in time. */
+export interface Recovery {
+  readonly event: 'recovery';
+  readonly step: number;
+  readonly outcome: 'came-back' | 'stayed-off' | 'came-back-after-cycling';
+  readonly after: Seconds;
+  readonly within: Seconds;
+}
+
+export interface Prompted {
+  readonly event: 'prompt';
+  readonly step: number;
+  readonly text: string;
+  readonly act?: string;
+}
+
+export interface Answered {
+  readonly event: 'answer';
+  readonly step: number;
+  readonly name: string;
+  readonly answer: string;
+  /** Where a quantity was asked for. */
+  readonly value?: number;
+  readonly dimension?: Dimension;
+}
+
+export interface Noticed {
+  readonly event: 'notice';
+  readonly text: string;
+}
+
+export interface GuardTripped {
+  readonly event: 'guard-tripped';
+  readonly guard: string;
+  readonly text: string;
+}
+
+export interface StepEnded {
+  readonly event: 'step-ended';
+  readonly step: number;
+}
+
+export interface Ended {
+  readonly event: 'ended';
+  readonly how: 'completed' | 'stopped' | 'failed';
+  readonly reason: string | null;
+}
+
+/** These are sealed, and flushed to the disk before the run goes on. */
+export const sealedEvents: ReadonlySet<JournalEvent['event']> = new Set([
+  'point-ended',
+  'input',
+  'guard-tripped',
+  'ended',
+]);
+
+export type TimedEvent = JournalEvent & { readonly t: Seconds };

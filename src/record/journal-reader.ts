@@ -1,0 +1,149 @@
+import { closeSync, openSync, readSync } from 'node:fs';
+import { type JournalEvent, journalFormat, type ReadingTaken, type TimedEvent } from './journal-event.js';
+import { NoRecordError } from './record-error.js';
+import { isSealed, newSealer, sealHolds } from './seal.js';
+
+/** How much of a journal can be believed. */
+export type Integrity =
+  | { readonly kind: 'whole'; readonly lines: number; readonly bytes: number }
+  /** It ends without its last event; everything up to the last whole line is there. */
+  | { readonly kind: 'cut-off'; readonly lines: number; readonly bytes: number; readonly tornBytes: number }
+  /** A seal does not hold or a line is no event; believed up to the last seal that holds. */
+  | { readonly kind: 'damaged'; readonly lines: number; readonly bytes: number; readonly line: number; readonly problem: string };
+
+const chunkSize = 1 << 18;
+const longestLine = 1 << 20;
+
+/**
+ * Checks every seal of a journal, in one pass over its bytes and in bounded memory.
+ * @throws NoRecordError when it can't be read.
+ */
+export function checkJournal(path: string): Integrity {
+  const hash = newSealer();
+  let lines = 0;
+  let bytes = 0;
+  let believed = { lines: 0, bytes: 0 };
+  let ended = false;
+  let torn = 0;
+  let damage: { line: number; problem: string } | undefined;
+  eachLine(path, Number.POSITIVE_INFINITY, (line, whole) => {
+    if (!whole) {
+      torn = line.length;
+      return 'stop';
+    }
+    lines += 1;
+    if (isSealed(line)) {
+      if (!sealHolds(hash, line)) {
+        damage = { line: lines, problem: 'the seal does not agree with the lines before it' };
+        return 'stop';
+      }
+      believed = { lines, bytes: bytes + line.length + 1 };
+      ended = line.includes('"event":"ended"');
+    } else if (ended || line.length === 0 || line.length > longestLine || line[0] !== 0x7b || line.at(-1) !== 0x7d) {
+      damage = { line: lines, problem: ended ? 'there is a line after the end' : 'the line is no event' };
+      return 'stop';
+    }
+    hash.update(line).update('\n');
+    bytes += line.length + 1;
+    return 'go on';
+  });
+  if (damage !== undefined) return { kind: 'damaged', ...believed, ...damage };
+  if (ended && torn === 0) return { kind: 'whole', lines, bytes };
+  return { kind: 'cut-off', lines, bytes, tornBytes: torn };
+}
+
+/**
+ * Hands over the events of a journal in order, as far as `integrity` believes it.
+ * A line that is no event ends the reading; the integrity that comes back says so.
+ */
+export function readJournal(path: string, integrity: Integrity, visit: (event: TimedEvent) => void): Integrity {
+  let lines = 0;
+  let bytes = 0;
+  let result = integrity;
+  eachLine(path, integrity.bytes, (line) => {
+    const event = parseEvent(line.toString('utf8'), lines === 0);
+    if (event === undefined) {
+      result = { kind: 'damaged', lines, bytes, line: lines + 1, problem: 'the line is no event' };
+      return 'stop';
+    }
+    lines += 1;
+    bytes += line.length + 1;
+    visit(event);
+    return 'go on';
+  });
+  return result;
+}
+
+/** Calls back for each line without its end; `whole` is false for a last line that has none. */
+function eachLine(path: string, upTo: number, visit: (line: Buffer, whole: boolean) => 'go on' | 'stop'): void {
+  let file: number;
+  try {
+    file = openSync(path, 'r');
+  } catch (cause) {
+    throw new NoRecordError(path, cause);
+  }
+  try {
+    const chunk = Buffer.allocUnsafe(chunkSize);
+    let kept: Buffer = Buffer.alloc(0);
+    let left = upTo;
+    while (left > 0) {
+      const count = readSync(file, chunk, 0, Math.min(chunkSize, left), null);
+      if (count === 0) break;
+      left -= count;
+      const data = kept.length === 0 ? chunk.subarray(0, count) : Buffer.concat([kept, chunk.subarray(0, count)]);
+      let start = 0;
+      for (let end = data.indexOf(0x0a, kept.length); end !== -1; end = data.indexOf(0x0a, start)) {
+        if (visit(data.subarray(start, end), true) === 'stop') return;
+        start = end + 1;
+      }
+      kept = Buffer.from(data.subarray(start));
+      if (kept.length > longestLine) break;
+    }
+    if (kept.length > 0) visit(kept, false);
+  } finally {
+    closeSync(file);
+  }
+}
+
+const knownEvents: ReadonlySet<string> = new Set<JournalEvent['event']>([
+  'opened',
+  'instrument',
+  'caution',
+  'step-began',
+  'point-began',
+  'reading',
+  'point-ended',
+  'input',
+  'recovery',
+  'prompt',
+  'answer',
+  'notice',
+  'guard-tripped',
+  'step-ended',
+  'ended',
+]);
+
+/** Parsing by hand, not by schema: there may be millions of these lines, and the seals guard their content. */
+function parseEvent(line: string, first: boolean): TimedEvent | undefined {
+  let event: Partial<TimedEvent>;
+  try {
+    event = JSON.parse(line) as Partial<TimedEvent>;
+  } catch {
+    return undefined;
+  }
+  if (typeof event.t !== 'number' || typeof event.event !== 'string' || !knownEvents.has(event.event)) return undefined;
+  if (first !== (event.event === 'opened')) return undefined;
+  if (event.event === 'opened' && event.format !== journalFormat) return undefined;
+  if (event.event === 'reading' && !isReading(event)) return undefined;
+  return event as TimedEvent;
+}
+
+function isReading(event: Partial<ReadingTaken>): boolean {
+  return (
+    typeof event.step === 'number' &&
+    typeof event.point === 'number' &&
+    typeof event.of === 'string' &&
+    typeof event.what === 'string' &&
+    (typeof event.value === 'number' || event.value === null)
+  );
+}

@@ -1,0 +1,102 @@
+import { closeSync, openSync, renameSync, writeSync } from 'node:fs';
+import { stringify } from 'csv-stringify/sync';
+import type { PointBegan } from './journal-event.js';
+import { checkJournal, readJournal } from './journal-reader.js';
+import { RecordWriteError } from './record-error.js';
+import type { RunFolder } from './run-folder.js';
+
+const columns = [
+  'time (s)',
+  'step',
+  'step kind',
+  'point',
+  'phase',
+  'sample',
+  'set current (A)',
+  'set voltage (V)',
+  'meter voltage (V)',
+  'load voltage (V)',
+  'load current (A)',
+  'temperature (°C)',
+] as const;
+
+const columnOf: Readonly<Record<string, (typeof columns)[number]>> = {
+  'meter voltage': 'meter voltage (V)',
+  'load voltage': 'load voltage (V)',
+  'load current': 'load current (A)',
+  'meter temperature': 'temperature (°C)',
+  'load temperature': 'temperature (°C)',
+};
+
+type Row = Partial<Record<(typeof columns)[number], string | number>>;
+
+const batchSize = 500;
+
+/**
+ * Writes readings.csv (RFC 4180, units in the header) from the journal: one row for each sample, which
+ * is all that was read at one moment. Empty cells were not read, or the instrument had no value.
+ * Only a batch of rows is ever in memory.
+ * @throws RecordWriteError
+ */
+export function writeReadingsCsv(folder: RunFolder): void {
+  const unfinished = `${folder.readings}.new`;
+  try {
+    const file = openSync(unfinished, 'w');
+    try {
+      let batch: Row[] = [];
+      const write = (header: boolean): void => {
+        writeSync(file, stringify(batch, { header, columns: [...columns], record_delimiter: 'windows' }));
+        batch = [];
+      };
+      write(true);
+      eachSample(folder.journal, (row) => {
+        batch.push(row);
+        if (batch.length === batchSize) write(false);
+      });
+      write(false);
+    } finally {
+      closeSync(file);
+    }
+    renameSync(unfinished, folder.readings);
+  } catch (cause) {
+    throw new RecordWriteError(folder.readings, cause);
+  }
+}
+
+function eachSample(journal: string, visit: (row: Row) => void): void {
+  let kind = '';
+  let point: PointBegan | undefined;
+  let row: Row | undefined;
+  const finish = (): void => {
+    if (row !== undefined) visit(row);
+    row = undefined;
+  };
+  readJournal(journal, checkJournal(journal), (event) => {
+    if (event.event === 'step-began') kind = event.kind;
+    if (event.event === 'point-began') {
+      finish();
+      point = event;
+    }
+    if (event.event !== 'reading' || point === undefined) return;
+    if (row?.sample !== event.sample) {
+      finish();
+      row = rowOf(event.t, kind, point, event.sample);
+    }
+    const column = columnOf[`${event.of} ${event.what}`];
+    if (column !== undefined && event.value !== null) row[column] = event.value;
+  });
+  finish();
+}
+
+function rowOf(t: number, kind: string, point: PointBegan, sample: number): Row {
+  return {
+    'time (s)': t,
+    step: point.step,
+    'step kind': kind,
+    point: point.point,
+    phase: point.phase,
+    sample,
+    'set current (A)': point.set.current ?? '',
+    'set voltage (V)': point.set.voltage ?? '',
+  };
+}

@@ -1,0 +1,73 @@
+import { closeSync, fsyncSync, mkdirSync, openSync, renameSync, writeFileSync, writeSync } from 'node:fs';
+import { basename, join } from 'node:path';
+import { RecordWriteError } from './record-error.js';
+import type { RunHeader } from './run-header.js';
+
+/** The files of one run. */
+export interface RunFolder {
+  readonly path: string;
+  /** The last part of the path: the name of the run. */
+  readonly name: string;
+  readonly journal: string;
+  readonly readings: string;
+  readonly findings: string;
+}
+
+export function runFolderAt(path: string): RunFolder {
+  return {
+    path,
+    name: basename(path),
+    journal: join(path, 'journal.jsonl'),
+    readings: join(path, 'readings.csv'),
+    findings: join(path, 'findings.json'),
+  };
+}
+
+/**
+ * Makes `<runs>/<UTC time>-<module>-<procedure>/`; a number is added when two runs begin in one second.
+ * @throws RecordWriteError
+ */
+export function makeRunFolder(runs: string, began: Date, module: string, procedure: string): RunFolder {
+  const time = began.toISOString().replace(/[-:]/g, '').replace(/\.\d+/, '');
+  const wanted = join(runs, `${time}-${module}-${procedure}`);
+  try {
+    mkdirSync(runs, { recursive: true });
+  } catch (cause) {
+    throw new RecordWriteError(runs, cause);
+  }
+  for (let attempt = 1; ; attempt += 1) {
+    const path = attempt === 1 ? wanted : `${wanted}-${attempt}`;
+    try {
+      mkdirSync(path);
+      return runFolderAt(path);
+    } catch (cause) {
+      if ((cause as NodeJS.ErrnoException).code !== 'EEXIST' || attempt > 999) throw new RecordWriteError(path, cause);
+    }
+  }
+}
+
+/** Writes run.json and flushes it. @throws RecordWriteError */
+export function writeHeader(folder: RunFolder, header: RunHeader): void {
+  const path = join(folder.path, 'run.json');
+  try {
+    const file = openSync(path, 'wx');
+    try {
+      writeSync(file, JSON.stringify(header, null, 2) + '\n');
+      fsyncSync(file);
+    } finally {
+      closeSync(file);
+    }
+  } catch (cause) {
+    throw new RecordWriteError(path, cause);
+  }
+}
+
+/** Writes a file of the record that can be made again, so that no reader ever sees half of it. */
+export function replaceFile(path: string, text: string): void {
+  try {
+    writeFileSync(`${path}.new`, text);
+    renameSync(`${path}.new`, path);
+  } catch (cause) {
+    throw new RecordWriteError(path, cause);
+  }
+}

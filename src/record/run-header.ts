@@ -1,0 +1,103 @@
+import { readFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { z } from 'zod';
+import { BadRecordError, NoRecordError } from './record-error.js';
+
+/**
+ * run.json: what was planned, with what, on what; written before anything is energised and never changed.
+ * All numbers are in V, A, Ω, W, s, °C and plain ratios. It holds all that the understand side needs to
+ * know, so that a record can be analysed without the files it was made from.
+ */
+export const headerFormat = 'railproof/record 1';
+
+const ratedValues = z.object({
+  voltage: z.number(),
+  current: z.number(),
+  ambient: z.number().optional(),
+});
+
+const accuracy = z.object({ ofReading: z.number(), fixed: z.number(), resolution: z.number().optional() });
+
+const instrument = z.object({
+  role: z.string(),
+  driver: z.string(),
+  address: z.string(),
+  identity: z.string(),
+  /** Half-widths of the promised error, by reading. */
+  accuracy: z.record(z.string(), accuracy),
+  ratings: z.object({
+    voltage: z.number().optional(),
+    current: z.number().optional(),
+    power: z.number().optional(),
+    leastVoltage: z.number().optional(),
+  }),
+});
+
+const quantityOrShare = z.union([
+  z.object({ kind: z.literal('absolute'), value: z.number() }),
+  z.object({ kind: z.literal('share'), ratio: z.number(), of: z.string() }),
+]);
+
+const requirement = z.union([
+  z.object({ kind: z.enum(['at-least', 'at-most']), value: quantityOrShare }),
+  z.object({ kind: z.literal('is'), word: z.string() }),
+]);
+
+const headerSchema = z.object({
+  format: z.literal(headerFormat),
+  program: z.object({ name: z.string(), version: z.string() }),
+  /** ISO 8601, UTC. */
+  began: z.string(),
+  modules: z
+    .array(
+      z.object({
+        name: z.string(),
+        description: z.string(),
+        rated: ratedValues,
+        protectionClass: z.enum(['I', 'II']),
+        input: z.enum(['mains', 'dc']),
+        outputIsolation: z.union([z.literal('unknown'), z.number()]),
+        changes: z.array(z.object({ date: z.string(), what: z.string() })),
+      }),
+    )
+    .min(1),
+  bench: z.object({
+    name: z.string(),
+    leads: z.object({ resistance: z.number(), uncertainty: z.number() }),
+    voltageFrom: z.enum(['meter-at-module', 'load-terminals']),
+    simulated: z.boolean(),
+  }),
+  procedure: z.object({ name: z.string(), title: z.string(), cautions: z.array(z.string()) }),
+  /** In order; `settings` are the step's parameters in words and numbers, as its kind understood them. */
+  steps: z.array(z.object({ kind: z.string(), summary: z.string(), settings: z.record(z.string(), z.unknown()) })),
+  criteria: z.array(z.object({ finding: z.string(), requirement })),
+  derating: z.object({ margin: z.number(), aboveNameplate: z.enum(['never', 'after-soak']) }),
+  instruments: z.array(instrument),
+  /** Every input file, as it was. */
+  files: z.array(z.object({ kind: z.string(), path: z.string(), sha256: z.string(), text: z.string() })),
+});
+
+export type RunHeader = Readonly<z.infer<typeof headerSchema>>;
+export type RecordedInstrument = RunHeader['instruments'][number];
+export type RecordedModule = RunHeader['modules'][number];
+
+/** @throws NoRecordError, BadRecordError */
+export function readHeader(folder: string): RunHeader {
+  const path = join(folder, 'run.json');
+  let text: string;
+  try {
+    text = readFileSync(path, 'utf8');
+  } catch (cause) {
+    throw new NoRecordError(folder, cause);
+  }
+  let data: unknown;
+  try {
+    data = JSON.parse(text);
+  } catch {
+    throw new BadRecordError(path, 'it is not JSON');
+  }
+  const parsed = headerSchema.safeParse(data);
+  if (parsed.success) return parsed.data;
+  const issue = parsed.error.issues[0];
+  throw new BadRecordError(path, `${issue?.path.join('.') ?? ''}: ${issue?.message ?? 'unreadable'}`);
+}

@@ -1,0 +1,57 @@
+import type { Finding } from '../analysis/finding.js';
+import type { Dimension } from '../quantity/quantity.js';
+import { toJsonUnit, ucumCode } from '../quantity/ucum.js';
+import { endedHow, type Result } from './result.js';
+
+/** The name and version of the format; the number changes when a reader would have to. */
+export const resultFormat = 'railproof/run 1';
+
+/**
+ * The result as one JSON object, for `--json` and for findings.json. Numbers are in the unit beside them,
+ * named by its UCUM code (a ratio is in %); a finding that is a word has the unit null.
+ */
+export function resultAsJson(result: Result): object {
+  const { how, reason } = endedHow(result);
+  return {
+    format: resultFormat,
+    run: result.run,
+    module: result.header.modules[0]?.name ?? null,
+    procedure: result.header.procedure.name,
+    ended: how === 'failed' ? 'stopped' : how,
+    reason,
+    outcome: result.outcome,
+    integrity: result.integrity,
+    readings: result.evidence.readings,
+    findings: result.findings.map(findingAsJson),
+    decisions: result.decisions.map(({ finding, requirement, outcome, probability, note }) => ({
+      finding,
+      requirement,
+      outcome,
+      probability,
+      note,
+    })),
+  };
+}
+
+function findingAsJson(finding: Finding): object {
+  const { dimension, interval, standardUncertainty } = finding;
+  const inUnit = (value: number): number => (dimension === null ? value : toJsonUnit(value, dimension as Dimension));
+  return {
+    name: finding.name,
+    value: typeof finding.value === 'number' ? inUnit(finding.value) : finding.value,
+    unit: dimension === null ? null : ucumCode(dimension),
+    standardUncertainty: standardUncertainty === null ? null : inUnit(standardUncertainty),
+    interval: interval === null ? null : interval.map(inUnit),
+    coverage: interval === null ? null : 0.95,
+    step: finding.step,
+    note: finding.note,
+    budget: finding.budget.map(({ name, kind, uncertainty, degreesOfFreedom }) => ({
+      name,
+      type: kind,
+      uncertainty: inUnit(uncertainty),
+      // JSON knows no infinity; null says that the value is taken as known.
+      degreesOfFreedom: Number.isFinite(degreesOfFreedom) ? degreesOfFreedom : null,
+    })),
+    factors: finding.factors,
+  };
+}

@@ -1,0 +1,24 @@
+import type { Evidence } from '../analysis/evidence.js';
+import type { Finding } from '../analysis/finding.js';
+import type { Decision, Outcome } from '../judgement/judge.js';
+import type { Integrity } from '../record/journal-reader.js';
+import type { RunHeader } from '../record/run-header.js';
+
+/** A record understood: everything that a report of it can say. */
+export interface Result {
+  readonly run: string;
+  readonly header: RunHeader;
+  readonly evidence: Evidence;
+  readonly integrity: Integrity;
+  readonly findings: readonly Finding[];
+  readonly decisions: readonly Decision[];
+  readonly outcome: Outcome | 'not-judged';
+}
+
+export type EndedHow = 'completed' | 'stopped' | 'failed' | 'cut-off';
+
+/** How the run ended, by its journal. A journal that can't be believed to its end counts as cut off. */
+export function endedHow({ evidence }: Result): { readonly how: EndedHow; readonly reason: string | null } {
+  const { ended } = evidence;
+  return ended === undefined ? { how: 'cut-off', reason: null } : { how: ended.how, reason: ended.reason };
+}

@@ -1,0 +1,15 @@
+import type { CautionName } from '../files/procedure.js';
+
+/** What must be read and acknowledged before anything is energised. */
+export const cautionTexts: Readonly<Record<CautionName, string>> = {
+  mains:
+    'The module is fed from the mains. Its case stays closed while it is plugged in, nothing inside is touched or measured, and the socket is within reach.',
+  'hot-surfaces':
+    'Module, load and leads get hot at the limit and stay hot for a while. Keep them clear of anything that burns and do not leave them covered.',
+  'stored-charge':
+    'Capacitors hold their charge after the plug is out. Wait, then prove the output dead with the meter before touching it.',
+  'floating-outputs':
+    'Outputs in a stack float at the sum of the voltages below them. Above 60 V DC they are no longer touch-safe.',
+  'earth-link-removed':
+    'Without its earth link the output has lost the protection against a fault from primary to secondary. Use a residual-current device; local codes and a licensed person decide whether it may be used so.',
+};

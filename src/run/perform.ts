@@ -1,0 +1,125 @@
+import { GuardTrippedError } from '../bench/bench-error.js';
+import { makeSafe, type Safety } from '../bench/make-safe.js';
+import type { OpenBench } from '../bench/open-bench.js';
+import { checkInputIsOff, checkOpenCircuitVoltage } from '../bench/pre-flight.js';
+import type { Clock } from '../clock/clock.js';
+import type { JournalEvent } from '../record/journal-event.js';
+import type { Operator } from '../steps/operator.js';
+import type { Progress } from '../steps/step-kind.js';
+import { cautionTexts } from './cautions.js';
+import type { Plan } from './plan.js';
+import { StoppedByOperator } from './stopped.js';
+
+export interface Performance {
+  readonly plan: Plan;
+  readonly bench: OpenBench;
+  readonly journal: { append(event: JournalEvent): void };
+  readonly operator: Operator;
+  readonly clock: Clock;
+  /** Aborted with a StoppedByOperator when the person wants the run to end. */
+  readonly signal: AbortSignal;
+  readonly watch: RunWatcher;
+}
+
+/** Told of what goes on; it can't change it. */
+export interface RunWatcher {
+  stepBegan(step: number, kind: string, summary: string): void;
+  progress(step: number, progress: Progress): void;
+}
+
+/** Why it ended; the first reason wins, and making safe comes after it and can't change it. */
+export type Ending =
+  | { readonly how: 'completed' }
+  | { readonly how: 'stopped'; readonly reason: string; readonly error: Error }
+  | { readonly how: 'failed'; readonly reason: string; readonly error: Error };
+
+export interface Performed {
+  readonly ending: Ending;
+  readonly safety: Safety;
+}
+
+/**
+ * Performs a plan from the cautions to the load off and read back. Whatever happens on the way, the bench
+ * is made safe before this returns, and the journal says how it ended.
+ */
+export async function perform(performance: Performance): Promise<Performed> {
+  const ending = await attempt(performance);
+  const safety = await makeSafe(performance.bench);
+  try {
+    performance.journal.append({
+      event: 'ended',
+      how: ending.how,
+      reason: ending.how === 'completed' ? null : ending.reason,
+    });
+  } catch (error) {
+    // A journal that can't be written is reason enough to fail, but not to hide what went wrong before.
+    if (ending.how === 'completed') return { ending: endingOf(error), safety };
+  }
+  return { ending, safety };
+}
+
+async function attempt(performance: Performance): Promise<Ending> {
+  try {
+    await begin(performance);
+    await goThrough(performance);
+    return { how: 'completed' };
+  } catch (error) {
+    if (error instanceof GuardTrippedError) noteTrip(performance, error);
+    return endingOf(error);
+  }
+}
+
+/** The journal may be what failed, and making safe must not wait for it. */
+function noteTrip({ journal }: Performance, trip: GuardTrippedError): void {
+  try {
+    journal.append({ event: 'guard-tripped', guard: trip.guard, text: trip.message });
+  } catch {
+    // `ended` will meet the same disk and report it.
+  }
+}
+
+async function begin({ plan, bench, journal, operator, signal }: Performance): Promise<void> {
+  await checkInputIsOff(bench);
+  for (const caution of plan.procedure.cautions) {
+    signal.throwIfAborted();
+    const acknowledged = await operator.acknowledge(caution, cautionTexts[caution]);
+    if (acknowledged === 'refused') throw new StoppedByOperator(`the caution "${caution}" was not acknowledged`);
+    journal.append({ event: 'caution', name: caution, by: acknowledged.by });
+  }
+  await bench.load.prepare();
+  if (plan.steps.some((step) => step.kind.needs.liveModule)) {
+    await checkOpenCircuitVoltage(bench, plan.module.rated.voltage);
+  }
+}
+
+async function goThrough({ plan, bench, journal, operator, clock, signal, watch }: Performance): Promise<void> {
+  const known = { ...plan.known };
+  const limits = { ...plan.ceilings, ratedVoltage: plan.module.rated.voltage };
+  for (const [index, planned] of plan.steps.entries()) {
+    signal.throwIfAborted();
+    const step = index + 1;
+    watch.stepBegan(step, planned.kind.kind, planned.summary);
+    journal.append({ event: 'step-began', step, kind: planned.kind.kind });
+    await planned.kind.perform(planned.parameters, {
+      step,
+      bench,
+      limits,
+      module: plan.module,
+      journal,
+      clock,
+      signal,
+      operator,
+      known,
+      show: (progress) => {
+        watch.progress(step, progress);
+      },
+    });
+    journal.append({ event: 'step-ended', step });
+  }
+}
+
+function endingOf(thrown: unknown): Ending {
+  const error = thrown instanceof Error ? thrown : new Error(String(thrown));
+  const stopped = (error as { exitCode?: unknown }).exitCode === 3;
+  return { how: stopped ? 'stopped' : 'failed', reason: error.message, error };
+}

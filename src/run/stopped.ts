@@ -1,0 +1,23 @@
+import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+
+/** The person at the bench wants the run to end. */
+export class StoppedByOperator extends RailproofError {
+  readonly code = 'STOPPED_BY_OPERATOR';
+  readonly exitCode = exitCodes.stopped;
+
+  constructor(what: string) {
+    super(what);
+  }
+}
+
+/** The procedure asks for things only a person can do, and there is nobody. */
+export class OperatorAbsentError extends RailproofError {
+  readonly code = 'OPERATOR_ABSENT';
+  readonly exitCode = exitCodes.usage;
+
+  constructor(steps: readonly string[]) {
+    super(`the procedure needs someone at the bench for ${steps.join(', ')} and there is no terminal`, {
+      advice: 'run it in a terminal; --yes acknowledges cautions only',
+    });
+  }
+}

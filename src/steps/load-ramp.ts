@@ -1,0 +1,57 @@
+import { z } from 'zod';
+import { count, quantity, quantityOrShare } from '../files/building-blocks.js';
+import { formatShare } from '../quantity/format-quantity.js';
+import { resolve } from '../quantity/resolve-share.js';
+import { defineStep } from './define-step.js';
+import { holds } from './holding.js';
+import { openCircuitVoltage } from './known-voltage.js';
+import { Points } from './point.js';
+
+const readingTime = 0.1;
+
+export const loadRamp = defineStep({
+  kind: 'load-ramp',
+  summary: 'constant-current points upwards: droop, regulation, lead resistance, steadiness',
+  parameters: z.strictObject({
+    from: quantityOrShare('current', 'the first point', { least: 0 }).prefault('0 A'),
+    to: quantityOrShare('current', 'the last point', { above: 0 }),
+    points: count('how many points, both ends included', { least: 2, most: 10_000 }).default(21),
+    dwell: quantity('time', 'settling before the first reading of a point', { least: 0 }).prefault('500 ms'),
+    readings: count('how many readings at a point', { least: 2, most: 10_000 }).default(5),
+    sag: quantity('ratio', 'the ramp ends where the voltage has fallen by this part of the open-circuit voltage', {
+      above: 0,
+      most: 0.5,
+    }).prefault('20 %'),
+  }),
+  measures: [],
+  needs: { liveModule: true, operator: 'never' },
+  references: ({ from, to }) => ({ from, to }),
+  currents: ['from', 'to'],
+  describe: ({ points, from, to }) => `${points} points from ${formatShare(from, 'current')} to ${formatShare(to, 'current')}`,
+  duration: ({ points, dwell, readings }) => points * (dwell + readings * readingTime),
+  async perform(parameters, context) {
+    const { load } = context.bench;
+    const from = resolve(parameters.from, context.known);
+    const to = resolve(parameters.to, context.known);
+    const voltage = openCircuitVoltage(context);
+    await load.setCurrent(0);
+    await load.inputOn();
+    const points = new Points(context);
+    for (let index = 0; index < parameters.points; index += 1) {
+      const current = from + ((to - from) * index) / (parameters.points - 1);
+      const { outcome } = await points.take({
+        phase: 'ramp',
+        set: { current },
+        dwell: parameters.dwell,
+        readings: parameters.readings,
+        judge: holds(voltage, parameters.sag, current),
+      });
+      if (outcome === 'dropped') {
+        context.journal.append({ event: 'notice', text: 'the module did not hold this point; the ramp ends here' });
+        break;
+      }
+    }
+    await load.setCurrent(0);
+    await load.inputOff();
+  },
+});

@@ -1,0 +1,98 @@
+import { guard, valueOf } from '../bench/guards.js';
+import type { Taken } from '../bench/sample.js';
+import type { Amperes, Seconds, Volts } from '../quantity/quantity.js';
+import type { Phase, PointOutcome } from '../record/journal-event.js';
+import type { StepContext } from './step-kind.js';
+
+/** What one sample says of the module, as far as a step must know it to go on. */
+export interface Seen {
+  readonly t: Seconds;
+  /** At the module; not a number when it could not be read. */
+  readonly voltage: Volts;
+  readonly current: Amperes;
+}
+
+export interface PointPlan {
+  readonly phase: Phase;
+  readonly set: { readonly current?: Amperes };
+  /** Wait between the set-point and the first reading. */
+  readonly dwell: Seconds;
+  readonly readings: number;
+  /** Wait between two readings; 0 when left out. */
+  readonly every?: Seconds;
+  /** What each sample says of the module. */
+  readonly judge: (seen: Seen) => PointOutcome;
+  /** Whether the point ends with this sample. When left out, a dropout ends it at once, to spare the module. */
+  readonly until?: (seen: Seen, outcome: PointOutcome) => boolean;
+}
+
+export interface PointSeen {
+  readonly outcome: PointOutcome;
+  readonly samples: readonly Seen[];
+}
+
+/** The points of one step, numbered as they are taken. */
+export class Points {
+  readonly #context: StepContext;
+  #count = 0;
+
+  constructor(context: StepContext) {
+    this.#context = context;
+  }
+
+  /**
+   * One point: set, wait, read several times; everything is in the journal before the next thing happens,
+   * and every sample has passed the guards.
+   */
+  async take(plan: PointPlan): Promise<PointSeen> {
+    const { bench, journal, clock, signal, step } = this.#context;
+    signal.throwIfAborted();
+    this.#count += 1;
+    const point = this.#count;
+    journal.append({ event: 'point-began', step, point, phase: plan.phase, set: plan.set });
+    if (plan.set.current !== undefined) await bench.load.setCurrent(plan.set.current);
+    await clock.sleep(Math.max(plan.dwell, bench.load.instrument.driver.settling), signal);
+    const ends = plan.until ?? ((_seen, judged) => judged === 'dropped');
+    const samples: Seen[] = [];
+    let outcome: PointOutcome = 'measured';
+    for (let sample = 1; sample <= plan.readings; sample += 1) {
+      if (sample > 1 && plan.every !== undefined) await clock.sleep(plan.every, signal);
+      const seen = await this.#sample(point, sample, plan.set.current);
+      samples.push(seen);
+      outcome = plan.judge(seen);
+      if (ends(seen, outcome)) break;
+    }
+    journal.append({ event: 'point-ended', step, point, outcome });
+    return { outcome, samples };
+  }
+
+  async #sample(point: number, sample: number, setCurrent: Amperes | undefined): Promise<Seen> {
+    const { bench, journal, clock, signal, limits, step, show } = this.#context;
+    signal.throwIfAborted();
+    const taken = await bench.sample();
+    for (const { of, what, measurement } of taken) {
+      journal.append({
+        event: 'reading',
+        step,
+        point,
+        sample,
+        of,
+        what,
+        ...(measurement.kind === 'value'
+          ? { value: measurement.value }
+          : { value: null, problem: measurement.kind }),
+      });
+    }
+    guard(taken, limits);
+    const seen = { t: clock.now(), voltage: moduleVoltage(this.#context, taken), current: valueOf(taken, 'load', 'current') };
+    show({ ...(setCurrent === undefined ? {} : { setCurrent }), voltage: seen.voltage, current: seen.current });
+    return seen;
+  }
+}
+
+/** The meter's voltage where there is one; otherwise the load's, and what the leads lose. */
+export function moduleVoltage({ bench }: StepContext, taken: readonly Taken[]): Volts {
+  if (bench.description.voltageFrom === 'meter-at-module') return valueOf(taken, 'meter', 'voltage');
+  const current = valueOf(taken, 'load', 'current');
+  return valueOf(taken, 'load', 'voltage') + current * bench.description.leads.resistance;
+}

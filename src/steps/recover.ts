@@ -1,0 +1,66 @@
+import type { Seconds, Volts } from '../quantity/quantity.js';
+import type { Points } from './point.js';
+import type { StepContext } from './step-kind.js';
+
+export type CameBack = 'came-back' | 'came-back-after-cycling' | 'stayed-off';
+
+const lookEvery: Seconds = 0.02;
+
+/**
+ * Takes the load off after an overload and waits for the voltage to be back. A module that stays off has
+ * latched: where someone can act they are asked to cycle its input, and the wait begins again.
+ */
+export async function comeBack(
+  context: StepContext,
+  points: Points,
+  least: Volts,
+  patience: Seconds,
+): Promise<CameBack> {
+  const { bench, journal, operator, clock, signal, step } = context;
+  const unloaded = clock.now();
+  await bench.load.inputOff();
+  const byItself = await waitForVoltage(points, unloaded, least, patience);
+  if (byItself.back) {
+    journal.append({ event: 'recovery', step, outcome: 'came-back', after: byItself.after, within: byItself.within });
+    return 'came-back';
+  }
+  journal.append({ event: 'recovery', step, outcome: 'stayed-off', after: patience, within: patience });
+  if (!operator.present) {
+    journal.append({ event: 'notice', text: 'the module has latched off and nobody is here to cycle its input' });
+    return 'stayed-off';
+  }
+  const request = {
+    name: 'cycle-input',
+    text: `The module has switched itself off and stays off. Unplug it, wait until its lamp is out (half a minute), plug it in again.`,
+    act: 'cycle input',
+    answer: 'done',
+  } as const;
+  journal.append({ event: 'prompt', step, text: request.text, act: request.act });
+  const answer = await operator.ask(request, signal);
+  journal.append({ event: 'answer', step, name: request.name, answer });
+  const cycled = await waitForVoltage(points, clock.now(), least, patience);
+  const outcome = cycled.back ? 'came-back-after-cycling' : 'stayed-off';
+  journal.append({ event: 'recovery', step, outcome, after: cycled.after, within: cycled.within });
+  return outcome;
+}
+
+/** The voltage was still away `after` seconds and back `within` seconds from the start. */
+async function waitForVoltage(
+  points: Points,
+  start: Seconds,
+  least: Volts,
+  patience: Seconds,
+): Promise<{ back: boolean; after: Seconds; within: Seconds }> {
+  const { outcome, samples } = await points.take({
+    phase: 'recovery',
+    set: {},
+    dwell: 0,
+    readings: Number.POSITIVE_INFINITY,
+    every: lookEvery,
+    judge: ({ voltage }) => (voltage >= least ? 'held' : 'dropped'),
+    until: ({ t }, judged) => judged === 'held' || t - start > patience,
+  });
+  const after = samples.at(-2)?.t ?? start;
+  const within = samples.at(-1)?.t ?? start;
+  return { back: outcome === 'held', after: after - start, within: within - start };
+}

@@ -1,0 +1,160 @@
+import type { Amperes, Ratio, Seconds } from '../quantity/quantity.js';
+import type { Phase } from '../record/journal-event.js';
+import { holds } from './holding.js';
+import { openCircuitVoltage } from './known-voltage.js';
+import { type PointSeen, Points } from './point.js';
+import { comeBack } from './recover.js';
+import type { StepContext } from './step-kind.js';
+import { firstUnsteady, type Probe } from './steadiness.js';
+
+/** All in amperes, seconds and ratios; what each means stands in the step's schema. */
+export interface SearchParameters {
+  readonly from: Amperes;
+  readonly ceiling: Amperes;
+  readonly resolution: Amperes;
+  readonly sag: Ratio;
+  readonly climb: number;
+  readonly dwell: Seconds;
+  readonly readings: number;
+  readonly watch: Seconds;
+  readonly recovery: Seconds;
+}
+
+/** The module held the one and dropped out at the other; no `dropped` means that the ceiling was held. */
+export interface Bracket {
+  readonly held: Amperes;
+  readonly dropped: Amperes | undefined;
+}
+
+/** A module whose limit keeps moving would be probed for ever. */
+const mostProbes = 80;
+const watchInterval = 0.05;
+
+/**
+ * The search for the current at which a module drops out.
+ *
+ * Every probe starts from a current that the module is known to hold. A dropout is ended at once, but for
+ * the first one, which is watched for a while because it shows how the module limits; then the load goes
+ * off, the module must come back by itself, and the known good current is proved again.
+ */
+export class Search {
+  readonly #parameters: SearchParameters;
+  readonly #context: StepContext;
+  readonly #points: Points;
+  readonly #openCircuit: number;
+  readonly #probes: Probe[] = [];
+  #held: Amperes = 0;
+  #dropped: Amperes | undefined;
+  #watched = false;
+  #givenUp = false;
+
+  constructor(parameters: SearchParameters, context: StepContext) {
+    this.#parameters = parameters;
+    this.#context = context;
+    this.#points = new Points(context);
+    this.#openCircuit = openCircuitVoltage(context);
+  }
+
+  async run(): Promise<Bracket> {
+    const { load } = this.#context.bench;
+    await load.setCurrent(0);
+    await load.inputOn();
+    await this.#probe('start', this.#parameters.from);
+    await this.#climb();
+    await this.#halve();
+    await this.#closeInOnSteadiness();
+    await load.setCurrent(0);
+    await load.inputOff();
+    return { held: this.#held, dropped: this.#dropped };
+  }
+
+  async #climb(): Promise<void> {
+    const { from, ceiling, climb } = this.#parameters;
+    const stride = (ceiling - from) / climb;
+    for (let step = 1; step <= climb && this.#dropped === undefined; step += 1) {
+      await this.#probe('climb', step === climb ? ceiling : from + stride * step);
+    }
+  }
+
+  async #halve(): Promise<void> {
+    while (this.#dropped !== undefined && !this.#givenUp && this.#probes.length < mostProbes) {
+      const width = this.#dropped - this.#held;
+      if (width <= this.#parameters.resolution * (1 + 1e-9)) return;
+      await this.#probe('halve', this.#held + width / 2);
+    }
+  }
+
+  /** Between the last steady and the first unsteady current, held ones all: it costs no dropout. */
+  async #closeInOnSteadiness(): Promise<void> {
+    while (!this.#givenUp && this.#probes.length < mostProbes) {
+      const edge = firstUnsteady(this.#probes);
+      if (edge === undefined || edge.unsteady - edge.steady <= 2 * this.#parameters.resolution) return;
+      await this.#probe('steadiness', (edge.steady + edge.unsteady) / 2);
+    }
+  }
+
+  async #probe(phase: Phase, current: Amperes): Promise<void> {
+    const seen = await this.#take(phase, current);
+    this.#probes.push({ current, ...seen });
+    if (seen.outcome === 'held') {
+      this.#held = Math.max(this.#held, current);
+      return;
+    }
+    this.#dropped = Math.min(this.#dropped ?? Number.POSITIVE_INFINITY, current);
+    if (!this.#watched) await this.#watch(current);
+    await this.#return();
+  }
+
+  /** The overload goes on for a while: a module's limit shows in how it fails. */
+  async #watch(current: Amperes): Promise<void> {
+    this.#watched = true;
+    const { watch } = this.#parameters;
+    await this.#points.take({
+      phase: 'overload',
+      set: { current },
+      dwell: 0,
+      readings: Math.max(2, Math.round(watch / (watchInterval + 0.05))),
+      every: watchInterval,
+      judge: () => 'measured',
+    });
+  }
+
+  /** Load off, module back, and the known good current proved; where it no longer holds, a lower one. */
+  async #return(): Promise<void> {
+    const { load } = this.#context.bench;
+    for (;;) {
+      const back = await comeBack(this.#context, this.#points, this.#openCircuit * (1 - this.#parameters.sag), this.#parameters.recovery);
+      if (back === 'stayed-off') {
+        this.#givenUp = true;
+        return;
+      }
+      await load.setCurrent(0);
+      await load.inputOn();
+      if (this.#held === 0) return;
+      const seen = await this.#take('return', this.#held);
+      this.#probes.push({ current: this.#held, ...seen });
+      if (seen.outcome === 'held') return;
+      this.#dropped = this.#held;
+      this.#held = Math.max(0, this.#held - this.#retreat());
+      if (this.#probes.length >= mostProbes) {
+        this.#givenUp = true;
+        return;
+      }
+    }
+  }
+
+  /** The limit has come down, by warming mostly: step back by a fiftieth, and at least ten resolutions. */
+  #retreat(): Amperes {
+    return Math.max(10 * this.#parameters.resolution, this.#held / 50);
+  }
+
+  #take(phase: Phase, current: Amperes): Promise<PointSeen> {
+    return this.#points.take({
+      phase,
+      set: { current },
+      dwell: this.#parameters.dwell,
+      readings: this.#parameters.readings,
+      judge: holds(this.#openCircuit, this.#parameters.sag, current),
+    });
+  }
+}

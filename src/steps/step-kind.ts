@@ -1,0 +1,62 @@
+import type { z } from 'zod';
+import type { OpenBench } from '../bench/open-bench.js';
+import type { GuardLimits } from '../bench/guards.js';
+import type { Clock } from '../clock/clock.js';
+import type { Module } from '../files/module.js';
+import type { QuantityOrShare, ReferenceName, Seconds } from '../quantity/quantity.js';
+import type { JournalEvent } from '../record/journal-event.js';
+import type { Operator } from './operator.js';
+
+/**
+ * One kind of step: what it may be told, what it needs and how it is performed. What its readings mean is
+ * not its business; that is for the analysis, which sees the journal only.
+ */
+export interface StepKind<Parameters = unknown> {
+  readonly kind: string;
+  /** One line for help and for the schema. */
+  readonly summary: string;
+  readonly parameters: z.ZodType<Parameters>;
+  /** What a later step may refer to once this one is done. */
+  readonly measures: readonly ReferenceName[];
+  readonly needs: {
+    /** The module is connected and on, so its voltage is checked beforehand. */
+    readonly liveModule: boolean;
+    /** Someone who can act is needed in any case, or only when something out of the ordinary happens. */
+    readonly operator: 'always' | 'never';
+  };
+  /** Every quantity among the parameters that may refer to another, by parameter name. */
+  references(parameters: Parameters): Readonly<Record<string, QuantityOrShare>>;
+  /** The parameters among `references` that are currents the load will be set to. */
+  readonly currents: readonly string[];
+  /** A sentence for the plan: `21 points from 0 A to 100 % of rated-current`. */
+  describe(parameters: Parameters): string;
+  /** A rough idea of how long it takes, for the time that remains. */
+  duration(parameters: Parameters): Seconds;
+  perform(parameters: Parameters, context: StepContext): Promise<void>;
+}
+
+/** What a step is given to work with. */
+export interface StepContext {
+  readonly step: number;
+  readonly bench: OpenBench;
+  readonly limits: GuardLimits;
+  readonly module: Module;
+  readonly journal: { append(event: JournalEvent): void };
+  readonly clock: Clock;
+  /** Aborted when the run must stop; looked at between questions, never inside one. */
+  readonly signal: AbortSignal;
+  readonly operator: Operator;
+  /** The nameplate and what was measured so far. */
+  readonly known: Known;
+  readonly show: (progress: Progress) => void;
+}
+
+export type Known = Partial<Record<ReferenceName, number>>;
+
+/** What someone who watches wants to see of the moment. */
+export interface Progress {
+  readonly setCurrent?: number;
+  readonly voltage?: number;
+  readonly current?: number;
+  readonly note?: string;
+}

@@ -1,0 +1,20 @@
+import { z } from 'zod';
+import { quantity } from '../files/building-blocks.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import { defineStep } from './define-step.js';
+
+export const wait = defineStep({
+  kind: 'wait',
+  summary: 'waits, with the load as the step before left it',
+  parameters: z.strictObject({ for: quantity('time', 'how long to wait', { least: 0 }) }),
+  measures: [],
+  needs: { liveModule: false, operator: 'never' },
+  references: () => ({}),
+  currents: [],
+  describe: (parameters) => `waits ${formatQuantity(parameters.for, 'time')}`,
+  duration: (parameters) => parameters.for,
+  async perform(parameters, { clock, signal, show }) {
+    show({ note: 'waiting' });
+    await clock.sleep(parameters.for, signal);
+  },
+});
