@@ -48,7 +48,7 @@ export class Dialogue {
   readonly #turns = new Turns();
   #inStep = true;
   #identity: string | undefined;
-  /** How many times the identity was asked for and has not been answered. */
+  /** How many times the identity was asked for and has not been answered: so many may still come. */
   #identitiesDue = 0;
 
   constructor(parts: DialogueParts) {
@@ -80,7 +80,7 @@ export class Dialogue {
   async ask(message: string): Promise<string> {
     const timeout = this.#wire.timeout;
     return this.#turns.take(async () => {
-      const reply = await this.#question(message, (reader) => reader.line(), timeout);
+      const reply = await this.#question(message, (reader) => this.#answer(reader, message), timeout);
       if (message === this.#identify) this.#learn(reply);
       return reply;
     });
@@ -135,8 +135,19 @@ export class Dialogue {
     return reply;
   }
 
+  /** The next line that is no late identity: one that is still due is not the answer to another question. */
+  #answer(reader: ReplyReader, message: string): string | undefined {
+    for (;;) {
+      const line = reader.line();
+      if (line === undefined || message === this.#identify || this.#identitiesDue === 0) return line;
+      if (line.trim() !== this.#identity) return line;
+      this.#identitiesDue--;
+      this.#notice({ kind: 'late-reply', shown: visible(line) });
+    }
+  }
+
   #learn(reply: string): void {
-    this.#identitiesDue = 0;
+    this.#identitiesDue--;
     const identity = reply.trim();
     if (this.#identity === undefined && this.#isIdentity(identity)) this.#identity = identity;
     else if (this.#identity !== identity) this.#inStep = false;
@@ -161,7 +172,6 @@ export class Dialogue {
       await this.#clearLine();
       await this.#send(this.#identify);
       if ((await this.#heardIdentity(giveUp)) && (await this.#clearLine())) {
-        this.#identitiesDue = 0;
         this.#notice({ kind: 'in-step-again' });
         return;
       }
@@ -180,7 +190,7 @@ export class Dialogue {
         continue;
       }
       heard = true;
-      this.#identitiesDue = Math.max(0, this.#identitiesDue - 1);
+      if (this.#identitiesDue > 0) this.#identitiesDue--;
       if (this.#identity !== undefined && this.#identitiesDue === 0) return true;
     }
     throw this.#outOfStep('it does not stop talking');
