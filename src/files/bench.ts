@@ -5,7 +5,9 @@ import type { Simulation } from './simulation-section.js';
 /** A bench file: the instruments, leads and hard limits of one work place. */
 export interface Bench {
   readonly name: string;
-  readonly instruments: { readonly load: InstrumentPlace } & Partial<Readonly<Record<Exclude<Role, 'load'>, InstrumentPlace>>>;
+  readonly instruments: { readonly load: InstrumentPlace } & Partial<
+    Readonly<Record<Exclude<Role, 'load'>, InstrumentPlace>>
+  >;
   /** There and back; used when nothing senses at the module. */
   readonly leads: { readonly resistance: Ohms; readonly uncertainty: Ohms };
   readonly voltageFrom: 'meter-at-module' | 'load-terminals';

@@ -42,7 +42,12 @@ export interface Wire {
 
 /** A reading is a number with a unit, or a yes or no. All of `ask` is sent; the last one is answered. */
 export type DriverReading =
-  | { readonly kind: 'number'; readonly ask: readonly string[]; readonly dimension: Dimension; readonly pattern?: RegExp }
+  | {
+      readonly kind: 'number';
+      readonly ask: readonly string[];
+      readonly dimension: Dimension;
+      readonly pattern?: RegExp;
+    }
   | { readonly kind: 'flag'; readonly ask: readonly string[]; readonly trueWhen: RegExp };
 
 /** Half-widths of the promised error: a part of the reading plus a fixed part, in the reading's unit. */

@@ -33,5 +33,11 @@ export interface Derating {
   readonly aboveNameplate: 'never' | 'after-soak';
 }
 
-export const cautions = ['mains', 'hot-surfaces', 'stored-charge', 'floating-outputs', 'earth-link-removed'] as const;
+export const cautions = [
+  'mains',
+  'hot-surfaces',
+  'stored-charge',
+  'floating-outputs',
+  'earth-link-removed',
+] as const;
 export type CautionName = (typeof cautions)[number];

@@ -63,7 +63,8 @@ export interface SimulatedError {
   readonly resolution: number;
 }
 
-export type FaultName = 'load-silent' | 'meter-silent' | 'load-lost' | 'meter-lost' | 'module-dead' | 'reversed';
+export type FaultName =
+  'load-silent' | 'meter-silent' | 'load-lost' | 'meter-lost' | 'module-dead' | 'reversed';
 
 export interface SimulatedFault {
   readonly at: Seconds;

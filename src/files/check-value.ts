@@ -1,0 +1,37 @@
+import type { z } from 'zod';
+import { plainWords } from './plain-words.js';
+import type { Complaint } from './yaml-document.js';
+
+export type Checked<T> =
+  | { readonly kind: 'good'; readonly value: T }
+  | { readonly kind: 'bad'; readonly complaints: readonly Complaint[] };
+
+/** Puts a value from a file through a schema; `path` is where the value stands in the file. */
+export function checkValue<T>(
+  schema: z.ZodType<T>,
+  value: unknown,
+  path: readonly PropertyKey[] = [],
+): Checked<T> {
+  const result = schema.safeParse(value, { error: plainWords });
+  if (result.success) return { kind: 'good', value: result.data };
+  return { kind: 'bad', complaints: result.error.issues.flatMap((issue) => complaints(issue, path)) };
+}
+
+function complaints(issue: z.core.$ZodIssue, before: readonly PropertyKey[]): Complaint[] {
+  const path = [...before, ...issue.path];
+  if (issue.code === 'unrecognized_keys') {
+    // `plainWords` writes a line for each key.
+    const lines = issue.message.split('\n');
+    return issue.keys.map((key, index) => ({ path, key, message: lines[index] ?? issue.message }));
+  }
+  if (issue.code === 'invalid_union') {
+    const meant = issue.errors.find((branch) => !branch.some(isOfAnotherType));
+    if (meant !== undefined) return meant.flatMap((inner) => complaints(inner, path));
+  }
+  return [{ path, message: issue.message }];
+}
+
+/** In a union, a branch for values of quite another type is not the one that was meant. */
+function isOfAnotherType(issue: z.core.$ZodIssue): boolean {
+  return issue.path.length === 0 && (issue.code === 'invalid_type' || issue.code === 'invalid_value');
+}

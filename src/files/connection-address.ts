@@ -1,0 +1,146 @@
+import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+import { shown } from '../quantity/shown-text.js';
+import type { ConnectionAddress, SerialSettings } from './bench.js';
+import { namePattern } from './name-pattern.js';
+import { didYouMean } from './nearest.js';
+
+/** A text that names no way to an instrument. */
+export class AddressError extends RailproofError {
+  readonly code = 'ADDRESS';
+  readonly exitCode = exitCodes.badFile;
+  readonly address: string;
+
+  constructor(message: string, address: string) {
+    super(message, { advice: `Ways to connect: ${addressForms.join(', ')}.` });
+    this.address = address;
+  }
+}
+
+/** One example of each form of address. */
+export const addressForms = [
+  'tcp://127.0.0.1:5025',
+  'serial:/dev/ttyUSB0?baud=9600&data=8&parity=none&stop=1&flow=none',
+  'replay:dialogue.jsonl',
+  'simulated:',
+] as const;
+
+/** What a serial line is set to where its address does not say otherwise. */
+export const serialDefaults: SerialSettings = { baud: 9600, data: 8, parity: 'none', stop: 1, flow: 'none' };
+
+const serialChoices = {
+  data: ['7', '8'],
+  parity: ['none', 'even', 'odd'],
+  stop: ['1', '2'],
+  flow: ['none', 'hardware', 'software'],
+} as const;
+const serialOptions = ['baud', ...Object.keys(serialChoices)];
+const slowest = 50;
+const fastest = 4_000_000;
+
+/**
+ * Reads the address of an instrument: `tcp://host:port`, `serial:path?baud=9600&…`, `replay:file.jsonl`,
+ * `simulated:` or `simulated:<dialect>`.
+ * @throws AddressError
+ */
+export function parseAddress(text: string): ConnectionAddress {
+  const [, scheme, rest = ''] = /^([a-z]+):(.*)$/s.exec(text) ?? [];
+  if (/[\p{Cc}\p{Cs}]/u.test(text) || text.length > 1000) {
+    throw new AddressError(`found ${shown(text)}, which is no address`, text);
+  }
+  switch (scheme) {
+    case 'tcp':
+      return parseTcp(rest, text);
+    case 'serial':
+      return parseSerial(rest, text);
+    case 'replay':
+      if (rest === '') throw new AddressError('replay: needs a file: replay:dialogue.jsonl', text);
+      return { kind: 'replay', file: rest };
+    case 'simulated':
+      if (rest === '') return { kind: 'simulated' };
+      if (!namePattern.test(rest)) throw new AddressError(`${shown(rest)} is no name of a dialect`, text);
+      return { kind: 'simulated', dialect: rest };
+    case undefined:
+      throw new AddressError(
+        `found ${shown(text)}; an address is needed: ${addressForms[0]}, ${addressForms[3]}`,
+        text,
+      );
+    default: {
+      const hint = didYouMean(scheme, schemes) || `; one of ${schemes.join(', ')} is needed`;
+      throw new AddressError(`no way to connect is called ${shown(scheme)}${hint}`, text);
+    }
+  }
+}
+
+/** The inverse of {@link parseAddress}; of a serial line it gives the speed and what is not the default. */
+export function formatAddress(address: ConnectionAddress): string {
+  switch (address.kind) {
+    case 'tcp':
+      return `tcp://${address.host.includes(':') ? `[${address.host}]` : address.host}:${address.port}`;
+    case 'serial': {
+      const options = (['data', 'parity', 'stop', 'flow'] as const)
+        .filter((option) => address[option] !== serialDefaults[option])
+        .map((option) => `&${option}=${address[option]}`);
+      return `serial:${address.path}?baud=${address.baud}${options.join('')}`;
+    }
+    case 'replay':
+      return `replay:${address.file}`;
+    case 'simulated':
+      return `simulated:${address.dialect ?? ''}`;
+  }
+}
+
+const schemes = ['tcp', 'serial', 'replay', 'simulated'];
+
+function parseTcp(rest: string, text: string): ConnectionAddress {
+  const [, bracketed, plain, portText] =
+    /^\/\/(?:\[([0-9A-Fa-f:.%\w]+)\]|([A-Za-z0-9._-]+))(?::(\d{1,5}))?$/.exec(rest) ?? [];
+  const host = bracketed ?? plain;
+  if (host === undefined) throw new AddressError(`found ${shown(text)}; needed: tcp://host:port`, text);
+  if (portText === undefined) throw new AddressError(`${shown(text)} lacks its port: ${text}:5025`, text);
+  const port = Number(portText);
+  if (port < 1 || port > 65535) throw new AddressError(`port ${portText} is not within 1 to 65535`, text);
+  return { kind: 'tcp', host, port };
+}
+
+function parseSerial(rest: string, text: string): ConnectionAddress {
+  const [path = '', query] = splitOnce(rest, '?');
+  if (path === '') throw new AddressError('serial: needs a port: serial:/dev/ttyUSB0?baud=9600', text);
+  const given = new Map<string, string>();
+  for (const part of query === undefined || query === '' ? [] : query.split('&')) {
+    const [option = '', value = ''] = splitOnce(part, '=');
+    if (!serialOptions.includes(option)) {
+      const hint = didYouMean(option, serialOptions) || `; known are ${serialOptions.join(', ')}`;
+      throw new AddressError(`a serial line has no option ${shown(option)}${hint}`, text);
+    }
+    if (given.has(option)) throw new AddressError(`the option '${option}' is given twice`, text);
+    given.set(option, value);
+  }
+  const chosen = (option: keyof typeof serialChoices): string => {
+    const value = given.get(option) ?? String(serialDefaults[option]);
+    const choices: readonly string[] = serialChoices[option];
+    if (choices.includes(value)) return value;
+    const hint = didYouMean(value, choices) || `; ${choices.join(' or ')} is needed`;
+    throw new AddressError(`${option}=${value} is not known${hint}`, text);
+  };
+  return {
+    kind: 'serial',
+    path,
+    baud: baudRate(given.get('baud'), text),
+    data: Number(chosen('data')) as SerialSettings['data'],
+    parity: chosen('parity') as SerialSettings['parity'],
+    stop: Number(chosen('stop')) as SerialSettings['stop'],
+    flow: chosen('flow') as SerialSettings['flow'],
+  };
+}
+
+function baudRate(given: string | undefined, text: string): number {
+  if (given === undefined) return serialDefaults.baud;
+  const baud = /^\d{1,7}$/.test(given) ? Number(given) : Number.NaN;
+  if (baud >= slowest && baud <= fastest) return baud;
+  throw new AddressError(`baud=${given} will not do; a speed from ${slowest} to ${fastest} is needed`, text);
+}
+
+function splitOnce(text: string, mark: string): [string] | [string, string] {
+  const at = text.indexOf(mark);
+  return at < 0 ? [text] : [text.slice(0, at), text.slice(at + mark.length)];
+}

@@ -1,0 +1,79 @@
+import { z } from 'zod';
+import { QuantityError, readQuantityOrShare } from '../quantity/parse-quantity.js';
+import type { Dimension } from '../quantity/quantity.js';
+import { shown } from '../quantity/shown-text.js';
+import { checkValue } from './check-value.js';
+import { namePattern } from './name-pattern.js';
+import { didYouMean } from './nearest.js';
+import { found } from './plain-words.js';
+import type { Criterion, Requirement } from './procedure.js';
+import { findingDimension, type Vocabulary } from './vocabulary.js';
+import type { Complaint } from './yaml-document.js';
+
+/** A criterion as written. What its value may be depends on the finding, so it is read afterwards. */
+export const criterionSchema = z.strictObject({
+  finding: z.string().meta({ description: 'What is required of: the name of a finding.' }),
+  'at-least': bound('The finding must be this or more.').exactOptional(),
+  'at-most': bound('The finding must be this or less.').exactOptional(),
+  is: z
+    .unknown()
+    .meta({
+      type: 'string',
+      description: 'The word that the finding must be.',
+      examples: ['constant-current'],
+    })
+    .exactOptional(),
+});
+
+const forms = ['at-least', 'at-most', 'is'] as const;
+
+/** Reads one criterion, or tells what is wrong with it; `path` is where it stands. */
+export function readCriterion(
+  value: unknown,
+  path: readonly PropertyKey[],
+  vocabulary: Vocabulary,
+): Criterion | readonly Complaint[] {
+  const checked = checkValue(criterionSchema, value, path);
+  if (checked.kind === 'bad') return checked.complaints;
+  const criterion = checked.value;
+  const { finding } = criterion;
+
+  const dimension = findingDimension(finding, vocabulary);
+  if (dimension === undefined) {
+    const hint = didYouMean(finding, Object.keys(vocabulary.findings));
+    return [{ path: [...path, 'finding'], message: `no finding is called ${shown(finding)}${hint}` }];
+  }
+  const [form, ...more] = forms.filter((each) => Object.hasOwn(criterion, each));
+  if (form === undefined || more.length > 0) {
+    return [{ path, message: 'a criterion has exactly one of at-least, at-most, is' }];
+  }
+  const requirement = readRequirement(form, criterion[form], finding, dimension);
+  if (typeof requirement === 'string') return [{ path: [...path, form], message: requirement }];
+  return { finding, requirement };
+}
+
+function readRequirement(
+  form: (typeof forms)[number],
+  value: unknown,
+  finding: string,
+  dimension: Dimension | 'word',
+): Requirement | string {
+  if (dimension === 'word') {
+    if (form !== 'is') return `${finding} is a word; write is: in place of ${form}:`;
+    if (typeof value === 'string' && namePattern.test(value)) return { kind: 'is', word: value };
+    return `${found(value)}; a word is needed`;
+  }
+  if (form === 'is') return `${finding} is a quantity; write at-least: or at-most: in place of is:`;
+  try {
+    return { kind: form, value: readQuantityOrShare(value, dimension) };
+  } catch (error) {
+    if (error instanceof QuantityError) return error.message;
+    throw error;
+  }
+}
+
+function bound(description: string): z.ZodUnknown {
+  return z
+    .unknown()
+    .meta({ type: 'string', description, examples: ['4 A', '100 % of rated-current', '1 %'] });
+}

@@ -1,0 +1,151 @@
+import { dimensionWords } from '../quantity/dimension-words.js';
+import { shown } from '../quantity/shown-text.js';
+import { operationsOf, readingsOf, type DriverReading, type Role } from './driver.js';
+import { didYouMean } from './nearest.js';
+import { readingDimensions } from './reading-dimensions.js';
+import type { Complaint } from './yaml-document.js';
+
+/** The parts of a driver file whose rules depend on each other. */
+interface DriverFile {
+  readonly role: Role;
+  readonly identify: string;
+  readonly errors: 'none' | { readonly ask: string };
+  readonly prepare: readonly string[];
+  readonly release: readonly string[];
+  readonly operations: Readonly<Record<string, readonly string[]>>;
+  readonly readings: Readonly<Record<string, DriverReading>>;
+  readonly accuracy: Readonly<Record<string, unknown>>;
+}
+
+/** What stands for the value in the messages of an operation that has one. */
+export const placeholderOf: Readonly<Record<string, string>> = {
+  'set-current': '{amps}',
+  'protect-current': '{amps}',
+  'set-voltage': '{volts}',
+  'protect-voltage': '{volts}',
+  'protect-power': '{watts}',
+  'close-channel': '{channel}',
+};
+
+/** An instrument is not made safe by silence: these operations must send something. */
+const mustSend: Readonly<Record<Role, readonly string[]>> = {
+  load: ['make-safe', 'input-on', 'input-off', 'set-current'],
+  meter: [],
+  scanner: ['open-all', 'close-channel'],
+  source: ['make-safe', 'output-on', 'output-off'],
+};
+
+/** What no key alone can tell: whether the role's operations and readings are there, and their placeholders right. */
+export function driverProblems(driver: DriverFile): Complaint[] {
+  return [
+    ...missingOrForeign(driver),
+    ...silentOperations(driver),
+    ...operationPlaceholders(driver),
+    ...strayPlaceholders(driver),
+    ...readingKinds(driver),
+    ...accuracyWithoutReading(driver),
+  ];
+}
+
+function* missingOrForeign(driver: DriverFile): Generator<Complaint> {
+  const { role } = driver;
+  const parts = [
+    { key: 'operations', word: 'operation', given: driver.operations, known: operationsOf[role] },
+    { key: 'readings', word: 'reading', given: driver.readings, known: readingsOf[role] },
+  ] as const;
+  for (const { key, word, given, known } of parts) {
+    const names: readonly string[] = [...known.must, ...known.may];
+    for (const each of Object.keys(given)) {
+      if (names.includes(each)) continue;
+      const hint = didYouMean(each, names) || (names.length === 0 ? '' : `; it has ${names.join(', ')}`);
+      yield { path: [key, each], message: `a ${role} has no ${word} '${each}'${hint}` };
+    }
+    for (const each of known.must) {
+      if (!Object.hasOwn(given, each))
+        yield { path: [key, each], message: `missing; a ${role} needs this ${word}` };
+    }
+  }
+}
+
+function* silentOperations({ role, operations }: DriverFile): Generator<Complaint> {
+  for (const operation of mustSend[role]) {
+    if (operations[operation]?.length !== 0) continue;
+    yield { path: ['operations', operation], message: 'at least one message is needed' };
+  }
+}
+
+function* operationPlaceholders({ operations }: DriverFile): Generator<Complaint> {
+  for (const [operation, messages] of Object.entries(operations)) {
+    const due = placeholderOf[operation];
+    const used = messages.flatMap(placeholdersIn);
+    if (due !== undefined && messages.length > 0 && !used.includes(due)) {
+      const typo = used.find((each) => didYouMean(each, [due]) !== '');
+      if (typo === undefined) {
+        yield {
+          path: ['operations', operation],
+          message: `no message holds ${due}, which stands for the value`,
+        };
+      }
+    }
+    for (const [index, message] of messages.entries()) {
+      for (const each of placeholdersIn(message)) {
+        if (each !== due) yield { path: ['operations', operation, index], message: stray(each, due) };
+      }
+    }
+  }
+}
+
+function* strayPlaceholders(driver: DriverFile): Generator<Complaint> {
+  const places: [Complaint['path'], string][] = [
+    [['identify'], driver.identify],
+    ...(driver.errors === 'none' ? [] : [[['errors', 'ask'], driver.errors.ask] as [string[], string]]),
+    ...driver.prepare.map((message, index): [PropertyKey[], string] => [['prepare', index], message]),
+    ...driver.release.map((message, index): [PropertyKey[], string] => [['release', index], message]),
+    ...Object.entries(driver.readings).flatMap(([reading, { ask }]) =>
+      ask.map((message): [PropertyKey[], string] => [['readings', reading, 'ask'], message]),
+    ),
+  ];
+  for (const [path, message] of places) {
+    for (const each of placeholdersIn(message)) yield { path, message: stray(each, undefined) };
+  }
+}
+
+function* readingKinds({ readings }: DriverFile): Generator<Complaint> {
+  for (const [name, reading] of Object.entries(readings)) {
+    const path = ['readings', name];
+    const due = isNumber(name) ? readingDimensions[name] : undefined;
+    if (due !== undefined && reading.kind === 'flag') {
+      yield { path, message: `the ${name} is a number; give its 'unit' in place of 'true-when'` };
+    }
+    if (name.endsWith('-state') && reading.kind === 'number') {
+      yield { path, message: `the ${name} is a yes or a no; give 'true-when' in place of 'unit'` };
+    }
+    if (due !== undefined && reading.kind === 'number' && reading.dimension !== due) {
+      const message = `the unit is that of ${dimensionWords[reading.dimension].name}; this reading is ${dimensionWords[due].name}`;
+      yield { path: [...path, 'unit'], message };
+    }
+  }
+}
+
+function* accuracyWithoutReading({ accuracy, readings }: DriverFile): Generator<Complaint> {
+  for (const name of Object.keys(accuracy)) {
+    if (Object.hasOwn(readings, name)) continue;
+    yield { path: ['accuracy', name], message: `this driver has no reading '${name}'` };
+  }
+}
+
+function placeholdersIn(message: string): string[] {
+  return message.match(/\{[^{}]*\}/g) ?? [];
+}
+
+function stray(placeholder: string, due: string | undefined): string {
+  const hint =
+    due === undefined
+      ? '; none is filled in here'
+      : didYouMean(placeholder, [due]) || `; ${due} is known here`;
+  return `unknown placeholder ${shown(placeholder)}${hint}`;
+}
+
+function isNumber(name: string): name is keyof typeof readingDimensions {
+  return Object.hasOwn(readingDimensions, name);
+}

@@ -1,0 +1,1 @@
+export { didYouMean, nearest } from '../quantity/nearest.js';

@@ -1,0 +1,78 @@
+import type { z } from 'zod';
+import { shown } from '../quantity/shown-text.js';
+import { checkValue } from './check-value.js';
+import { BadFileError } from './file-error.js';
+import { fileKinds, headers, type FileKind } from './file-kind.js';
+import { didYouMean } from './nearest.js';
+import { parseYaml, type Complaint, type YamlDocument } from './yaml-document.js';
+
+/**
+ * Reads a file that is wholly described by a schema.
+ * @throws BadFileError with all its problems.
+ */
+export function parseFile<T>(kind: FileKind, schema: z.ZodType<T>, text: string, fileName: string): T {
+  const document = openDocument(kind, text, fileName);
+  const checked = checkValue(schema, document.value);
+  if (checked.kind === 'bad') throw badFile(kind, document, checked.complaints);
+  return checked.value;
+}
+
+/**
+ * The YAML of a file whose first line says that it is of this kind and of a version we read. Nothing else
+ * is looked at when it is not: what a bench lacks to be a module is of no interest.
+ * @throws BadFileError
+ */
+export function openDocument(kind: FileKind, text: string, fileName: string): YamlDocument {
+  const document = parseYaml(text, fileName);
+  const found = headerKind(document);
+  if (found !== kind) {
+    const message = `this is a ${found} file; a ${kind} file is needed`;
+    throw new BadFileError([document.place({ path: ['railproof'], message })]);
+  }
+  return document;
+}
+
+/**
+ * What kind of file a text says it is, from its first line.
+ * @throws BadFileError when it does not say, or names a kind or version that we do not know.
+ */
+export function fileKindOf(text: string, fileName: string): FileKind {
+  return headerKind(parseYaml(text, fileName));
+}
+
+export function badFile(
+  kind: FileKind,
+  document: YamlDocument,
+  complaints: readonly Complaint[],
+): BadFileError {
+  const advice = `'railproof schema ${kind}' prints what such a file may hold.`;
+  return new BadFileError(
+    complaints.map((complaint) => document.place(complaint)),
+    { advice },
+  );
+}
+
+function headerKind(document: YamlDocument): FileKind {
+  const refuse = (message: string, path: readonly string[] = []): never => {
+    throw new BadFileError([document.place({ path, message })]);
+  };
+  const { value, topKeys } = document;
+  const firstLine = `the first line names the kind of file, as in 'railproof: ${headers.module}'`;
+  if (value === null || value === undefined) return refuse(`the file is empty; ${firstLine}`);
+  if (typeof value !== 'object' || !('railproof' in value)) return refuse(firstLine);
+  if (topKeys[0] !== 'railproof') return refuse(`the line with 'railproof' must come first`, ['railproof']);
+
+  const header = String(value.railproof);
+  const [, word = header, version] = /^(\S+) (\d+)$/.exec(header) ?? [];
+  const kind = fileKinds.find((known) => known === word);
+  if (kind === undefined) {
+    const hint = didYouMean(word, fileKinds) || `; one of ${fileKinds.join(', ')} is needed`;
+    return refuse(`no kind of file is called ${shown(word)}${hint}`, ['railproof']);
+  }
+  const reads = `this railproof reads '${headers[kind]}'`;
+  if (version === undefined) return refuse(`the version is missing; ${reads}`, ['railproof']);
+  if (header !== headers[kind]) {
+    return refuse(`version ${version} of the ${kind} format is not known; ${reads}`, ['railproof']);
+  }
+  return kind;
+}

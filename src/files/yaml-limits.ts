@@ -1,0 +1,66 @@
+import { isAlias, isCollection, isNode, isPair, isScalar, type Document, type Node } from 'yaml';
+import type { TextProblem } from './yaml-syntax.js';
+
+/** As many values as any file of ours could hold, aliases expanded. */
+export const mostValues = 20_000;
+const deepest = 64;
+
+/**
+ * Looks for nesting that no file of ours has, before the parser, which recurses, sees the text. Brackets
+ * in quoted texts count too; they are closed again, so they do no harm.
+ */
+export function nestsTooDeeply(source: string): TextProblem | undefined {
+  const compact = /(?:[-?:][ \t]+){64}/.exec(source);
+  if (compact !== null) return { offset: compact.index, message: 'nested too deeply' };
+  let depth = 0;
+  for (let offset = 0; offset < source.length; offset += 1) {
+    const unit = source[offset];
+    if (unit === '[' || unit === '{') depth += 1;
+    else if (unit === ']' || unit === '}') depth = Math.max(0, depth - 1);
+    if (depth > deepest) return { offset, message: 'nested too deeply' };
+  }
+  return undefined;
+}
+
+/**
+ * Refuses tags, aliases that lead nowhere or into themselves, and aliases that expand to more values than
+ * any file could hold (the alias bomb). Each anchor is sized once, so the cost is linear in the text.
+ */
+export function limitProblem(document: Document): TextProblem | undefined {
+  const sizes = new Map<string, number>();
+  const open = new Set<string>();
+  let problem: TextProblem | undefined;
+  let total = 0;
+
+  const report = (node: Node, message: string): number => {
+    problem ??= { offset: node.range?.[0] ?? 0, message };
+    return 0;
+  };
+  const sizeOf = (node: unknown): number => {
+    if (problem !== undefined) return 0;
+    if (isPair(node)) return sizeOf(node.key) + sizeOf(node.value);
+    if (!isNode(node)) return 0;
+    if (isAlias(node)) {
+      if (open.has(node.source)) return report(node, `the alias '*${node.source}' leads into itself`);
+      const size = sizes.get(node.source);
+      if (size === undefined) return report(node, `no anchor '&${node.source}' stands before this alias`);
+      total += size;
+      if (total > mostValues) return report(node, 'the aliases up to here expand to too many values');
+      return size;
+    }
+    if (node.tag !== undefined) return report(node, `tags are not read here; found one before this value`);
+    const anchor = isScalar(node) || isCollection(node) ? node.anchor : undefined;
+    if (anchor !== undefined) open.add(anchor);
+    let size = 1;
+    if (isCollection(node)) for (const item of node.items) size += sizeOf(item);
+    total += 1;
+    if (total > mostValues) return report(node, 'more values than any file of this kind needs');
+    if (anchor !== undefined) {
+      open.delete(anchor);
+      sizes.set(anchor, size);
+    }
+    return size;
+  };
+  sizeOf(document.contents);
+  return problem;
+}
