@@ -1,7 +1,7 @@
 import { spawn, type ChildProcess } from 'node:child_process';
 import { once } from 'node:events';
 import { constants, existsSync } from 'node:fs';
-import { open } from 'node:fs/promises';
+import { type FileHandle, open } from 'node:fs/promises';
 import type { Clock } from '../clock/clock.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { LOOPBACK } from './serve-tcp.js';
@@ -27,8 +27,10 @@ export async function serveOnPty(facts: { port: number; link: string; clock: Clo
     stdio: ['ignore', 'ignore', 'pipe'],
   });
   await standing(socat, link, clock);
-  // While somebody has it open, the pty outlives the programs that open and close it one after the other.
-  const held = await open(link, constants.O_RDWR | constants.O_NOCTTY | constants.O_NONBLOCK);
+  const held = await holdOpen(link).catch(async (cause: unknown) => {
+    await ended(socat);
+    throw cause;
+  });
   return {
     close: async () => {
       await held.close();
@@ -37,32 +39,38 @@ export async function serveOnPty(facts: { port: number; link: string; clock: Clo
   };
 }
 
+/** While somebody has it open, the pty outlives the programs that open and close it one after the other. */
+function holdOpen(link: string): Promise<FileHandle> {
+  return open(link, constants.O_RDWR | constants.O_NOCTTY | constants.O_NONBLOCK);
+}
+
 async function standing(socat: ChildProcess, link: string, clock: Clock): Promise<void> {
-  let complaint = '';
-  let failure: NodeJS.ErrnoException | undefined;
-  let over = false;
+  const seen: { complaint: string; ended: boolean; failure?: NodeJS.ErrnoException } = {
+    complaint: '',
+    ended: false,
+  };
   socat.stderr?.on('data', (text: Buffer) => {
-    complaint = (complaint + text.toString()).slice(-MOST_COMPLAINT);
+    seen.complaint = (seen.complaint + text.toString()).slice(-MOST_COMPLAINT);
   });
   socat.once('error', (error) => {
-    failure = error;
-    over = true;
+    seen.failure = error;
+    seen.ended = true;
   });
   socat.once('exit', () => {
-    over = true;
+    seen.ended = true;
   });
   const deadline = clock.now() + PATIENCE;
-  while (!over && !existsSync(link) && clock.now() < deadline) await clock.sleep(LOOK_EVERY);
-  if (!over && existsSync(link)) return;
+  while (!seen.ended && !existsSync(link) && clock.now() < deadline) await clock.sleep(LOOK_EVERY);
+  if (!seen.ended && existsSync(link)) return;
   await ended(socat);
-  const missing = failure?.code === 'ENOENT';
+  const missing = seen.failure?.code === 'ENOENT';
   throw new CannotServeError({
     where: `serial:${link}`,
-    reason: missing ? 'socat is not installed' : `socat made no pty: ${lastLine(complaint)}`,
+    reason: missing ? 'socat is not installed' : `socat made no pty: ${lastLine(seen.complaint)}`,
     advice: missing
       ? 'Install socat (apt install socat, or brew install socat), or serve on TCP without --pty.'
       : 'Is the folder there and writable, and is the name free?',
-    cause: failure,
+    cause: seen.failure,
   });
 }
 

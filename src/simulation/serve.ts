@@ -56,13 +56,14 @@ export async function serveBench(options: ServeOptions): Promise<ServedBench> {
     for (const [role, driver] of Object.entries(drivers) as [ServedRole, Driver][]) {
       const instrument = opened.instrument(role, driver, dialectIn(bench, role));
       const served = await serveOnTcp({ instrument, clock, began: opened.began, port: ports[role] ?? 0 });
-      closings.push(served.close);
+      closings.push(() => served.close());
       if (folder === undefined) {
         addresses[role] = `tcp://${LOOPBACK}:${served.port}`;
         continue;
       }
       const link = join(folder, role);
-      closings.push((await serveOnPty({ port: served.port, link, clock })).close);
+      const line = await serveOnPty({ port: served.port, link, clock });
+      closings.push(() => line.close());
       addresses[role] = `serial:${link}?baud=115200`;
     }
   } catch (error) {

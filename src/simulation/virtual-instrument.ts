@@ -94,7 +94,7 @@ export class VirtualInstrument {
 
   #wake(dialect: Dialect, { ratings }: Driver): Interpreter {
     const identity = `railproof,simulated ${dialect.role},K-bench,1`;
-    if (dialect.role === 'meter') return dialect.wake({ identity, measure: () => this.#read('voltage') });
+    if (dialect.role === 'meter') return dialect.wake({ identity, measure: (what) => this.#probe(what) });
     return dialect.wake({
       identity,
       most: {
@@ -107,6 +107,13 @@ export class VirtualInstrument {
       },
       measure: (what) => this.#read(what),
     });
+  }
+
+  /** On an output that has a voltage of its own an ohmmeter shows overload. */
+  #probe(what: 'voltage' | 'resistance'): number {
+    if (what === 'voltage') return this.#read('voltage');
+    this.#free += this.#readingTime;
+    return Number.POSITIVE_INFINITY;
   }
 
   /** One reading: the mean over its aperture, the module's noise, then this instrument's own errors. */

@@ -8,14 +8,22 @@ export const configuredMeter: Dialect = {
   name: 'configured-meter',
   role: 'meter',
   replyEnd: '\n',
-  wake: (hands) =>
-    new ScpiInterpreter({
+  wake: (hands) => {
+    let configured: 'voltage' | 'resistance' = 'voltage';
+    return new ScpiInterpreter({
       identity: hands.identity,
-      reset: () => undefined,
+      reset: () => {
+        configured = 'voltage';
+      },
       commands: [
-        // Direct voltage is also what it wakes with, so there is nothing to remember.
-        configuration('CONFigure[:SCALar]:VOLTage[:DC]', () => undefined),
-        question('READ', () => nr3(hands.measure('voltage'))),
+        configuration('CONFigure[:SCALar]:VOLTage[:DC]', () => {
+          configured = 'voltage';
+        }),
+        configuration('CONFigure[:SCALar]:RESistance', () => {
+          configured = 'resistance';
+        }),
+        question('READ', () => nr3(hands.measure(configured))),
       ],
-    }),
+    });
+  },
 };

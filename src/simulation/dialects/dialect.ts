@@ -13,7 +13,8 @@ export interface LoadHands {
 
 export interface MeterHands {
   readonly identity: string;
-  measure(what: 'voltage'): number;
+  /** Volts, or ohms; infinite is beyond every range. */
+  measure(what: 'voltage' | 'resistance'): number;
 }
 
 /** A way of speaking, for one role. It knows the wire's text and nothing of drivers. */

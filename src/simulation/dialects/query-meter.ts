@@ -12,6 +12,9 @@ export const queryMeter: Dialect = {
     new ScpiInterpreter({
       identity: hands.identity,
       reset: () => undefined,
-      commands: [question('MEASure[:SCALar]:VOLTage[:DC]', () => nr3(hands.measure('voltage')), 2)],
+      commands: [
+        question('MEASure[:SCALar]:VOLTage[:DC]', () => nr3(hands.measure('voltage')), 2),
+        question('MEASure[:SCALar]:RESistance', () => nr3(hands.measure('resistance')), 2),
+      ],
     }),
 };
