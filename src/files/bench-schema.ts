@@ -61,6 +61,8 @@ export const benchSchema: z.ZodType<Bench> = z
     description: 'The instruments, leads and hard limits of one work place.',
   })
   .superRefine((bench, context) => {
+    // What would not fit together may only be misspelt, and that has been told already.
+    if (context.issues.length > 0) return;
     const complain = (path: PropertyKey[], message: string): void => {
       context.addIssue({ code: 'custom', path, message });
     };

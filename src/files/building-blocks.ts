@@ -147,12 +147,17 @@ export function readFromText<T>(
 }
 
 function freeText(pattern: RegExp, description: string, longest: number): z.ZodString {
-  return z
-    .string()
-    .trim()
-    .max(longest)
-    .regex(pattern, { error: ({ input }) => `${found(input)}; control characters are not allowed here` })
-    .meta({ description });
+  return (
+    z
+      .string()
+      .trim()
+      .max(longest)
+      // Not as a `pattern` in the JSON Schema: editors differ in which character classes they know.
+      .refine((text) => pattern.test(text), {
+        error: ({ input }) => `${found(input)}; control characters are not allowed here`,
+      })
+      .meta({ description })
+  );
 }
 
 function examplesOf(dimension: Dimension): string[] {

@@ -1,4 +1,5 @@
 import type { z } from 'zod';
+import { nearest } from './nearest.js';
 import { plainWords } from './plain-words.js';
 import type { Complaint } from './yaml-document.js';
 
@@ -14,10 +15,14 @@ export function checkValue<T>(
 ): Checked<T> {
   const result = schema.safeParse(value, { error: plainWords });
   if (result.success) return { kind: 'good', value: result.data };
-  return { kind: 'bad', complaints: result.error.issues.flatMap((issue) => complaints(issue, path)) };
+  const complaints = withoutTwins(
+    result.error.issues.flatMap((issue) => told(issue, [])),
+    value,
+  );
+  return { kind: 'bad', complaints: complaints.map((each) => ({ ...each, path: [...path, ...each.path] })) };
 }
 
-function complaints(issue: z.core.$ZodIssue, before: readonly PropertyKey[]): Complaint[] {
+function told(issue: z.core.$ZodIssue, before: readonly PropertyKey[]): Complaint[] {
   const path = [...before, ...issue.path];
   if (issue.code === 'unrecognized_keys') {
     // `plainWords` writes a line for each key.
@@ -26,7 +31,7 @@ function complaints(issue: z.core.$ZodIssue, before: readonly PropertyKey[]): Co
   }
   if (issue.code === 'invalid_union') {
     const meant = issue.errors.find((branch) => !branch.some(isOfAnotherType));
-    if (meant !== undefined) return meant.flatMap((inner) => complaints(inner, path));
+    if (meant !== undefined) return meant.flatMap((inner) => told(inner, path));
   }
   return [{ path, message: issue.message }];
 }
@@ -34,4 +39,26 @@ function complaints(issue: z.core.$ZodIssue, before: readonly PropertyKey[]): Co
 /** In a union, a branch for values of quite another type is not the one that was meant. */
 function isOfAnotherType(issue: z.core.$ZodIssue): boolean {
   return issue.path.length === 0 && (issue.code === 'invalid_type' || issue.code === 'invalid_value');
+}
+
+/** A key that is misspelt is unknown, and its right spelling is missing: that is one mistake, told once. */
+function withoutTwins(complaints: readonly Complaint[], value: unknown): Complaint[] {
+  const misspelt = complaints.filter((each) => each.key !== undefined);
+  return complaints.filter(({ path }) => {
+    const name = path.at(-1);
+    if (typeof name !== 'string' || valueAt(value, path) !== undefined) return true;
+    const parent = path.slice(0, -1).join('.');
+    return !misspelt.some((other) => {
+      return other.path.join('.') === parent && nearest(other.key ?? '', [name]) !== undefined;
+    });
+  });
+}
+
+function valueAt(value: unknown, path: readonly PropertyKey[]): unknown {
+  let inner = value;
+  for (const part of path) {
+    if (typeof inner !== 'object' || inner === null || !Object.hasOwn(inner, part)) return undefined;
+    inner = (inner as Record<PropertyKey, unknown>)[part];
+  }
+  return inner;
 }

@@ -77,21 +77,16 @@ function* silentOperations({ role, operations }: DriverFile): Generator<Complain
 function* operationPlaceholders({ operations }: DriverFile): Generator<Complaint> {
   for (const [operation, messages] of Object.entries(operations)) {
     const due = placeholderOf[operation];
-    const used = messages.flatMap(placeholdersIn);
-    if (due !== undefined && messages.length > 0 && !used.includes(due)) {
-      const typo = used.find((each) => didYouMean(each, [due]) !== '');
-      if (typo === undefined) {
-        yield {
-          path: ['operations', operation],
-          message: `no message holds ${due}, which stands for the value`,
-        };
-      }
-    }
-    for (const [index, message] of messages.entries()) {
-      for (const each of placeholdersIn(message)) {
-        if (each !== due) yield { path: ['operations', operation, index], message: stray(each, due) };
-      }
-    }
+    const path = ['operations', operation];
+    const strays = messages.flatMap((message, index) =>
+      placeholdersIn(message)
+        .filter((each) => each !== due)
+        .map((each) => ({ path: [...path, index], message: stray(each, due) })),
+    );
+    yield* strays;
+    if (due === undefined || messages.length === 0 || strays.length > 0) continue;
+    if (messages.some((message) => message.includes(due))) continue;
+    yield { path, message: `no message holds ${due}, which stands for the value` };
   }
 }
 

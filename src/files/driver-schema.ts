@@ -27,7 +27,7 @@ const ask = z
 const lineEnd = (description: string): z.ZodString =>
   z
     .string()
-    .regex(/^\p{ASCII}{1,4}$/u, {
+    .refine((text) => /^\p{ASCII}{1,4}$/u.test(text), {
       error: ({ input }) => `${found(input)}; 1 to 4 ASCII characters are needed, as in "\\n" or "\\r\\n"`,
     })
     .meta({ description, examples: ['\n', '\r\n'] });

@@ -3,10 +3,11 @@ import { choice, line, name, quantity, quantityOrWord } from './building-blocks.
 import { withoutHeader } from './camel-keys.js';
 import { headers } from './file-kind.js';
 import type { Module } from './module.js';
+import { found } from './plain-words.js';
 
 const change = z.strictObject({
   date: z.iso
-    .date({ error: 'a date is needed, year first: 2026-11-14' })
+    .date({ error: ({ input }) => `${found(input)}; a date is needed, year first: 2026-11-14` })
     .meta({ description: 'The day of the change, year first.', examples: ['2026-11-14'] }),
   what: line('What was done.').min(1),
 });
