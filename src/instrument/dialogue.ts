@@ -23,8 +23,8 @@ export interface DialogueParts {
 
 /** How long a block may take in all, and getting back in step, in timeouts. */
 const blockPatience = 60;
-const stepPatience = 8;
-const attempts = 3;
+const stepPatience = 10;
+const attempts = 4;
 const mostLateReplies = 256;
 
 /**
@@ -33,9 +33,10 @@ const mostLateReplies = 256;
  * Replies carry no sign of the question they answer, so a late one must be kept from being taken for the
  * next answer. What is on the line before a question is thrown away and told. After a question without an
  * answer the dialogue is out of step: before the next question it asks for the identity, and since
- * instruments answer in order, all that comes before the identity is late. Where an identity was asked for
- * more than once and not answered as often, or is not known yet, the line must also stay quiet for a
- * whole timeout. Telling needs no step, so an instrument can always be told to be safe.
+ * instruments answer in order, all that comes before the identity is late. Where the identity was asked for
+ * more often than it was answered, or is not known yet, one answer proves little: then it must be asked
+ * and answered twice, with the line quiet for a whole timeout after each. Telling needs no step, so an
+ * instrument can always be told to be safe.
  */
 export class Dialogue {
   readonly #connection: Connection;
@@ -168,10 +169,13 @@ export class Dialogue {
   async #getInStep(): Promise<void> {
     this.#inStep = false;
     const giveUp = this.#clock.now() + stepPatience * this.#wire.timeout;
+    let quietRounds = 0;
     for (let attempt = 0; attempt < attempts && this.#clock.now() < giveUp; attempt++) {
       await this.#clearLine();
       await this.#send(this.#identify);
-      if ((await this.#heardIdentity(giveUp)) && (await this.#clearLine())) {
+      const heard = await this.#identityRound(giveUp);
+      quietRounds = heard === 'then-quiet' ? quietRounds + 1 : 0;
+      if ((heard === 'all' || quietRounds === 2) && (await this.#clearLine())) {
         this.#notice({ kind: 'in-step-again' });
         return;
       }
@@ -179,19 +183,23 @@ export class Dialogue {
     throw this.#outOfStep(`it does not answer "${visible(this.#identify)}" as it should`);
   }
 
-  /** Reads up to the last identity that is due: past it when all came, or when nothing comes any more. */
-  async #heardIdentity(giveUp: number): Promise<boolean> {
-    let heard = false;
+  /** Reads up to the last identity that is due, or until nothing comes any more. */
+  async #identityRound(giveUp: number): Promise<'all' | 'then-quiet' | 'nothing'> {
+    let heard: string | undefined;
     for (let count = 0; count < mostLateReplies; count++) {
       const reply = await this.#nextLine(giveUp);
-      if (reply === undefined) return heard && this.#clock.now() < giveUp;
-      if (!this.#mayBeIdentity(reply)) {
-        this.#notice({ kind: 'late-reply', shown: visible(reply) });
+      if (reply === undefined) {
+        if (heard === undefined || this.#clock.now() >= giveUp) return 'nothing';
+        this.#identity ??= heard;
+        return 'then-quiet';
+      }
+      if (reply.kind === 'endless' || !this.#mayBeIdentity(reply.text)) {
+        this.#notice({ kind: 'late-reply', shown: visible(reply.text) });
         continue;
       }
-      heard = true;
+      heard = reply.text.trim();
       if (this.#identitiesDue > 0) this.#identitiesDue--;
-      if (this.#identity !== undefined && this.#identitiesDue === 0) return true;
+      if (this.#identity !== undefined && this.#identitiesDue === 0) return 'all';
     }
     throw this.#outOfStep('it does not stop talking');
   }
@@ -201,15 +209,19 @@ export class Dialogue {
     return this.#identity === undefined ? this.#isIdentity(text) : text === this.#identity;
   }
 
-  /** The next line, or undefined once the line has been quiet for a whole timeout. */
-  async #nextLine(giveUp: number): Promise<string | undefined> {
+  /** The next line, whole or not, or undefined once the line has been quiet for a whole timeout. */
+  async #nextLine(
+    giveUp: number,
+  ): Promise<{ readonly kind: 'whole' | 'endless'; readonly text: string } | undefined> {
     const since = this.#clock.now();
     const patience = { since, silence: this.#wire.timeout, atMost: giveUp - since };
     try {
-      return await this.#line.reply((reader) => reader.line(), patience);
+      const text = await this.#line.reply((reader) => reader.line(), patience);
+      return text === undefined ? undefined : { kind: 'whole', text };
     } catch (error) {
-      if (error instanceof ReplyTooLongError) throw this.#outOfStep('it does not stop talking');
-      throw error;
+      if (!(error instanceof ReplyTooLongError)) throw error;
+      this.#line.begun();
+      return { kind: 'endless', text: error.begins };
     }
   }
 

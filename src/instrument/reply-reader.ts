@@ -9,6 +9,7 @@ export interface ReplyLimits {
 
 const carriageReturn = Buffer.from('\r');
 const lineFeed = Buffer.from('\n');
+const bothEnds = Buffer.from('\r\n');
 const hash = 0x23;
 const digitZero = 0x30;
 
@@ -89,7 +90,7 @@ export class ReplyReader {
         if (this.#to < begin + header.length) return undefined;
         const block = new Uint8Array(this.#buffer.subarray(begin, begin + header.length));
         this.#passTo(begin + header.length);
-        this.#mayFollow([this.#end, Buffer.concat([carriageReturn, this.#end])]);
+        this.#mayFollow(this.#end.equals(lineFeed) ? [lineFeed, bothEnds] : [this.#end]);
         return block;
       }
     }
@@ -158,7 +159,8 @@ export class ReplyReader {
     const whole = this.#trailing.find((end) => held.subarray(0, end.length).equals(end));
     if (whole !== undefined) this.#passTo(this.#from + whole.length);
     const mayStillCome = this.#trailing.some((end) => end.subarray(0, held.length).equals(held));
-    if (whole !== undefined || !mayStillCome) this.#trailing = [];
+    if (whole?.equals(carriageReturn)) this.#mayFollow([lineFeed]);
+    else if (whole !== undefined || !mayStillCome) this.#trailing = [];
   }
 
   #passTo(at: number): void {
