@@ -11,7 +11,9 @@ export function answerFindings(evidence: Evidence): readonly Finding[] {
   });
 }
 
-function stepsWithAnswers(evidence: Evidence): { step: number; answer: Evidence['steps'][number]['answers'][number] }[] {
+function stepsWithAnswers(
+  evidence: Evidence,
+): { step: number; answer: Evidence['steps'][number]['answers'][number] }[] {
   return evidence.steps
     .filter((step) => step.kind === 'operator')
     .flatMap((step) => step.answers.map((answer) => ({ step: step.step, answer })));

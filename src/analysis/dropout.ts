@@ -77,7 +77,10 @@ export function dropoutFindings(evidence: Evidence, bracket: DropoutBracket | un
       'current',
       value,
       [
-        promised('between the held and the dropped current', rectangular((bracket.dropped - bracket.held) / 2)),
+        promised(
+          'between the held and the dropped current',
+          rectangular((bracket.dropped - bracket.held) / 2),
+        ),
         promised(`${current.of}, gain`, current.gain * value),
         promised(`${current.of}, offset`, current.offset),
         promised(`${current.of}, resolution`, current.resolution),

@@ -72,7 +72,14 @@ export class EvidenceCollector {
         return;
       case 'step-began': {
         const settings = this.#header.steps[event.step - 1]?.settings ?? {};
-        this.#steps.push({ step: event.step, kind: event.kind, settings, points: [], recoveries: [], answers: [] });
+        this.#steps.push({
+          step: event.step,
+          kind: event.kind,
+          settings,
+          points: [],
+          recoveries: [],
+          answers: [],
+        });
         return;
       }
       case 'point-began':
@@ -138,7 +145,9 @@ export class EvidenceCollector {
 
   #moduleVoltage(current: Amperes): Volts {
     const { voltageFrom, leads } = this.#header.bench;
-    return voltageFrom === 'meter-at-module' ? this.#meterVoltage : this.#loadVoltage + current * leads.resistance;
+    return voltageFrom === 'meter-at-module'
+      ? this.#meterVoltage
+      : this.#loadVoltage + current * leads.resistance;
   }
 }
 

@@ -44,9 +44,16 @@ export function leadFindings(evidence: Evidence): readonly Finding[] {
   );
   const low = finding.interval?.[0] ?? Number.NEGATIVE_INFINITY;
   const worse = low > resistance + uncertainty;
-  return [worse ? { ...finding, note: 'more than the bench file says: look for a loose or burnt joint' } : finding];
+  return [
+    worse ? { ...finding, note: 'more than the bench file says: look for a loose or burnt joint' } : finding,
+  ];
 }
 
 function isWhole(point: PointEvidence): boolean {
-  return point.outcome === 'held' && point.moduleVoltage.count > 0 && point.loadVoltage.count > 0 && point.current.count > 0;
+  return (
+    point.outcome === 'held' &&
+    point.moduleVoltage.count > 0 &&
+    point.loadVoltage.count > 0 &&
+    point.current.count > 0
+  );
 }

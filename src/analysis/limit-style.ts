@@ -32,7 +32,8 @@ export function limitStyleFindings(
 }
 
 interface Verdict {
-  readonly style: 'latch-off' | 'hiccup' | 'constant-power' | 'constant-current' | 'foldback' | 'undetermined';
+  readonly style:
+    'latch-off' | 'hiccup' | 'constant-power' | 'constant-current' | 'foldback' | 'undetermined';
   readonly because: string;
 }
 
@@ -41,8 +42,11 @@ const nothing = 0.05;
 const limitSized = 0.4;
 
 function styleOf(step: StepEvidence, overload: PointEvidence, dropout: Amperes, openCircuit: Volts): Verdict {
-  const samples = overload.samples.filter(({ voltage, current }) => !Number.isNaN(voltage) && !Number.isNaN(current));
-  const share = (is: (sample: (typeof samples)[number]) => boolean): number => samples.filter(is).length / samples.length;
+  const samples = overload.samples.filter(
+    ({ voltage, current }) => !Number.isNaN(voltage) && !Number.isNaN(current),
+  );
+  const share = (is: (sample: (typeof samples)[number]) => boolean): number =>
+    samples.filter(is).length / samples.length;
   const recovered = step.recoveries.at(0)?.outcome;
   const idle = share(({ current }) => current < nothing * dropout);
   const active = share(({ current }) => current > limitSized * dropout);
@@ -58,7 +62,8 @@ function styleOf(step: StepEvidence, overload: PointEvidence, dropout: Amperes, 
   }
   const mean = overload.current.mean;
   const steady = overload.current.maximum - overload.current.minimum < 0.1 * dropout;
-  if (!steady) return { style: 'undetermined', because: 'the overload current was neither steady nor in pulses' };
+  if (!steady)
+    return { style: 'undetermined', because: 'the overload current was neither steady nor in pulses' };
   if (gone === 0 && followsHyperbola(overload, dropout, openCircuit)) {
     return { style: 'constant-power', because: 'under overload the voltage falls as the current grows' };
   }
@@ -67,7 +72,10 @@ function styleOf(step: StepEvidence, overload: PointEvidence, dropout: Amperes, 
     return { style: 'constant-current', because: 'under overload the current stays at the limit' };
   }
   if (mean > nothing * dropout && mean < 0.9 * dropout) {
-    return { style: 'foldback', because: `under overload the current falls to ${Math.round((mean / dropout) * 100)} % of the limit` };
+    return {
+      style: 'foldback',
+      because: `under overload the current falls to ${Math.round((mean / dropout) * 100)} % of the limit`,
+    };
   }
   return { style: 'undetermined', because: 'no rule fits the overload' };
 }

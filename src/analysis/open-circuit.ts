@@ -36,11 +36,21 @@ function spread(points: readonly PointEvidence[], mean: number): Finding['budget
   const name = 'spread of the readings';
   const only = points[0]?.moduleVoltage;
   if (points.length === 1 && only !== undefined) {
-    return { name, kind: 'A', uncertainty: only.uncertaintyOfMean ?? 0, degreesOfFreedom: Math.max(1, only.count - 1) };
+    return {
+      name,
+      kind: 'A',
+      uncertainty: only.uncertaintyOfMean ?? 0,
+      degreesOfFreedom: Math.max(1, only.count - 1),
+    };
   }
   const squares = points.reduce((sum, point) => sum + (point.moduleVoltage.mean - mean) ** 2, 0);
   const degreesOfFreedom = points.length - 1;
-  return { name, kind: 'A', uncertainty: Math.sqrt(squares / degreesOfFreedom / points.length), degreesOfFreedom };
+  return {
+    name,
+    kind: 'A',
+    uncertainty: Math.sqrt(squares / degreesOfFreedom / points.length),
+    degreesOfFreedom,
+  };
 }
 
 /** A slope of voltage over time that chance would give less than once in a hundred. */
@@ -51,6 +61,9 @@ function driftNote(points: readonly PointEvidence[]): string {
     points.map((point) => point.moduleVoltage.mean),
   );
   if (fit.slopeUncertainty === 0) return '';
-  const chance = 2 * (1 - studentTDistribution(Math.abs(fit.slope / fit.slopeUncertainty), fit.degreesOfFreedom));
-  return chance < 0.01 ? `drifts by ${formatQuantity(fit.slope * 3600, 'voltage-rate', { significant: 2 })}` : '';
+  const chance =
+    2 * (1 - studentTDistribution(Math.abs(fit.slope / fit.slopeUncertainty), fit.degreesOfFreedom));
+  return chance < 0.01
+    ? `drifts by ${formatQuantity(fit.slope * 3600, 'voltage-rate', { significant: 2 })}`
+    : '';
 }

@@ -8,7 +8,8 @@ import type { Factor, Finding } from './finding.js';
  */
 export function recommendedFindings(evidence: Evidence, usable: Finding | undefined): readonly Finding[] {
   const rated = evidence.header.modules[0]?.rated;
-  if (usable?.interval == null || rated === undefined || typeof usable.value !== 'number') return [];
+  if (usable === undefined || rated === undefined) return [];
+  if (usable.interval === null || typeof usable.value !== 'number') return [];
   const { margin } = evidence.header.derating;
   const low = Math.max(0, usable.interval[0]);
   const derated = low * margin;
@@ -20,7 +21,11 @@ export function recommendedFindings(evidence: Evidence, usable: Finding | undefi
       reason: `from the usable current to its 95 % lower bound, ${formatQuantity(low, 'current', { significant: 4 })}`,
     },
     { name: 'margin', factor: margin, reason: 'asked for by the procedure, for ageing and warmer days' },
-    { name: 'ambient', factor: 1, reason: 'no ambient line was given; it holds for the surroundings of the test' },
+    {
+      name: 'ambient',
+      factor: 1,
+      reason: 'no ambient line was given; it holds for the surroundings of the test',
+    },
   ];
   if (derated > rated.current) {
     factors.push({

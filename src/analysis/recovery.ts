@@ -24,9 +24,14 @@ export function recoveryFindings(evidence: Evidence): readonly Finding[] {
       'time',
       (slowest.after + slowest.within) / 2,
       [promised('between two looks', rectangular((slowest.within - slowest.after) / 2))],
-      { step: slowest.step, note: `the slowest of ${recoveries.length}` },
+      { step: slowest.step, note: noteOf(slowest, recoveries.length) },
     ),
   ];
+}
+
+function noteOf({ after }: { readonly after: number }, count: number): string {
+  const which = count === 1 ? 'one recovery' : `the slowest of ${count}`;
+  return after === 0 ? `${which}; back before the first look` : which;
 }
 
 /** Whether the module ever stayed off after an overload. */

@@ -24,7 +24,9 @@ const unsteadyRatio = 4;
  * @param points held ones, by rising current.
  */
 export function findEdge(points: readonly CurvePoint[], resolution: Volts): Edge | undefined {
-  const spread = points.flatMap(({ current, deviation }) => (deviation === undefined ? [] : [{ current, deviation }]));
+  const spread = points.flatMap(({ current, deviation }) =>
+    deviation === undefined ? [] : [{ current, deviation }],
+  );
   const lower = spread.slice(0, Math.ceil(spread.length / 2)).map((point) => point.deviation);
   if (lower.length < 2) return undefined;
   const usual = Math.max(median(lower), resolution);
@@ -32,7 +34,9 @@ export function findEdge(points: readonly CurvePoint[], resolution: Volts): Edge
   const first = unsteady.findIndex((is, index) => is && isMostly(unsteady.slice(index)));
   const above = spread[first];
   const below = spread[first - 1];
-  return above === undefined || below === undefined ? undefined : { steady: below.current, unsteady: above.current };
+  return above === undefined || below === undefined
+    ? undefined
+    : { steady: below.current, unsteady: above.current };
 }
 
 function isMostly(flags: readonly boolean[]): boolean {
@@ -54,7 +58,10 @@ export function steadinessFindings(evidence: Evidence, points: readonly CurvePoi
       'current',
       value,
       [
-        promised('between the last steady and the first unsteady point', rectangular((edge.unsteady - edge.steady) / 2)),
+        promised(
+          'between the last steady and the first unsteady point',
+          rectangular((edge.unsteady - edge.steady) / 2),
+        ),
         promised(`${current.of}, gain`, current.gain * value),
         promised(`${current.of}, offset`, current.offset),
       ],

@@ -1,22 +1,27 @@
 import type { Bench } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
-import type { Amperes, Volts, Watts } from '../quantity/quantity.js';
 
 /** What may never be exceeded on this bench, and who says so. */
 export interface Ceilings {
-  readonly voltage: Ceiling<Volts>;
-  readonly current: Ceiling<Amperes>;
-  readonly power: Ceiling<Watts>;
+  /** In volts. */
+  readonly voltage: Ceiling;
+  /** In amperes. */
+  readonly current: Ceiling;
+  /** In watts. */
+  readonly power: Ceiling;
 }
 
-export interface Ceiling<Value extends number = number> {
-  readonly value: Value;
+export interface Ceiling {
+  readonly value: number;
   /** In words, for messages: `the bench`, `the load's rating`. */
   readonly setBy: string;
 }
 
 /** The strictest of the bench's limits and the ratings of the instruments that carry the quantity. */
-export function ceilingsOf(bench: Bench, drivers: { readonly load: Driver; readonly meter?: Driver | undefined }): Ceilings {
+export function ceilingsOf(
+  bench: Bench,
+  drivers: { readonly load: Driver; readonly meter?: Driver | undefined },
+): Ceilings {
   const { load, meter } = drivers;
   return {
     voltage: strictest(

@@ -52,7 +52,8 @@ export class Load {
     await this.instrument.perform('input-on');
     const confirmed = await this.isOn();
     this.#onInput('on', confirmed);
-    if (!confirmed) throw new DisobeyedError(this.address, 'was told to switch its input on and says that it is off');
+    if (!confirmed)
+      throw new DisobeyedError(this.address, 'was told to switch its input on and says that it is off');
   }
 
   /** @throws DisobeyedError when the load says that its input is still on. */
@@ -60,7 +61,8 @@ export class Load {
     await this.instrument.perform('input-off');
     const confirmed = !(await this.isOn());
     this.#onInput('off', confirmed);
-    if (!confirmed) throw new DisobeyedError(this.address, 'was told to switch its input off and says that it is on');
+    if (!confirmed)
+      throw new DisobeyedError(this.address, 'was told to switch its input off and says that it is on');
   }
 
   /** Off by the driver's make-safe messages, whatever state the load was in; read back. */

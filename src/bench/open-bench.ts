@@ -53,7 +53,12 @@ export async function openBench(parts: BenchParts): Promise<OpenBench> {
   }
 }
 
-function assemble(parts: BenchParts, ceilings: Ceilings, first: Instrument, meter: Instrument | undefined): OpenBench {
+function assemble(
+  parts: BenchParts,
+  ceilings: Ceilings,
+  first: Instrument,
+  meter: Instrument | undefined,
+): OpenBench {
   const load = new Load(first, ceilings, parts.onInput);
   const instruments = meter === undefined ? [first] : [first, meter];
   return {

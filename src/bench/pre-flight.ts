@@ -24,16 +24,26 @@ const nothing = 0.05;
  */
 export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): Promise<void> {
   const taken = await bench.sample();
-  const volts = bench.meter === undefined ? valueOf(taken, 'load', 'voltage') : valueOf(taken, 'meter', 'voltage');
+  const volts =
+    bench.meter === undefined ? valueOf(taken, 'load', 'voltage') : valueOf(taken, 'meter', 'voltage');
   if (Number.isNaN(volts)) {
-    throw new PreFlightError('the voltage of the module could not be read', 'check the range and the leads of the meter');
+    throw new PreFlightError(
+      'the voltage of the module could not be read',
+      'check the range and the leads of the meter',
+    );
   }
   const read = formatQuantity(volts, 'voltage');
   if (volts < -rated * nothing) {
-    throw new PreFlightError(`the module reads ${read}`, 'the polarity is reversed: swap the leads at the module');
+    throw new PreFlightError(
+      `the module reads ${read}`,
+      'the polarity is reversed: swap the leads at the module',
+    );
   }
   if (volts < rated * nothing) {
-    throw new PreFlightError(`the module reads ${read}`, 'is it plugged in and switched on, are the leads in place?');
+    throw new PreFlightError(
+      `the module reads ${read}`,
+      'is it plugged in and switched on, are the leads in place?',
+    );
   }
   if (Math.abs(volts - rated) > rated * tolerance) {
     throw new PreFlightError(

@@ -40,7 +40,8 @@ function decideOne(criterion: Criterion, header: RunHeader, findings: readonly F
   if (requirement.kind === 'is') return decideWord(name, requirement.word, finding);
   const limit = limitOf(requirement.value as QuantityOrShare, header, findings);
   const words = `${requirement.kind === 'at-least' ? 'at least' : 'at most'} ${inWords(requirement.value as QuantityOrShare, limit, finding)}`;
-  if (finding === undefined || typeof finding.value !== 'number') return undecided(name, words, 'was not measured');
+  if (finding === undefined || typeof finding.value !== 'number')
+    return undecided(name, words, 'was not measured');
   if (limit === undefined) return undecided(name, words, 'what it refers to was not measured');
   const expanded = finding.interval === null ? 0 : (finding.interval[1] - finding.interval[0]) / 2;
   const decision = decide({
@@ -65,7 +66,11 @@ function undecided(finding: string, requirement: string, note: string): Decision
 }
 
 /** Shares refer to the nameplate, or to another finding of the same record. */
-function limitOf(value: QuantityOrShare, header: RunHeader, findings: readonly Finding[]): number | undefined {
+function limitOf(
+  value: QuantityOrShare,
+  header: RunHeader,
+  findings: readonly Finding[],
+): number | undefined {
   if (value.kind === 'absolute') return value.value;
   const rated = header.modules[0]?.rated;
   const nameplate: Partial<Record<ReferenceName, number | undefined>> = {

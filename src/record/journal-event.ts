@@ -38,10 +38,13 @@ export interface InstrumentAnswered {
   readonly identity: string;
 }
 
+/** Who took note of a caution: a person, the one who wrote `--yes`, or the operator of a simulated bench. */
+export type Acknowledgement = 'operator' | '--yes' | 'simulated-operator';
+
 export interface CautionAcknowledged {
   readonly event: 'caution';
   readonly name: string;
-  readonly by: 'operator' | '--yes';
+  readonly by: Acknowledgement;
 }
 
 export interface StepBegan {
@@ -54,7 +57,8 @@ export interface StepBegan {
  * What a point is for: `idle` input off; `ramp` on the way up; `start`, `climb`, `halve` and `return`
  * belong to a search; `steadiness` looks for the first unsteady current; `overload` is watched past the limit; `recovery` is after it.
  */
-export type Phase = 'idle' | 'ramp' | 'start' | 'climb' | 'halve' | 'return' | 'steadiness' | 'overload' | 'recovery';
+export type Phase =
+  'idle' | 'ramp' | 'start' | 'climb' | 'halve' | 'return' | 'steadiness' | 'overload' | 'recovery';
 
 export interface PointBegan {
   readonly event: 'point-began';

@@ -9,7 +9,13 @@ export type Integrity =
   /** It ends without its last event; everything up to the last whole line is there. */
   | { readonly kind: 'cut-off'; readonly lines: number; readonly bytes: number; readonly tornBytes: number }
   /** A seal does not hold or a line is no event; believed up to the last seal that holds. */
-  | { readonly kind: 'damaged'; readonly lines: number; readonly bytes: number; readonly line: number; readonly problem: string };
+  | {
+      readonly kind: 'damaged';
+      readonly lines: number;
+      readonly bytes: number;
+      readonly line: number;
+      readonly problem: string;
+    };
 
 const chunkSize = 1 << 18;
 const longestLine = 1 << 20;
@@ -19,44 +25,68 @@ const longestLine = 1 << 20;
  * @throws NoRecordError when it can't be read.
  */
 export function checkJournal(path: string): Integrity {
-  const hash = newSealer();
-  let lines = 0;
-  let bytes = 0;
-  let believed = { lines: 0, bytes: 0 };
-  let ended = false;
-  let torn = 0;
-  let damage: { line: number; problem: string } | undefined;
-  eachLine(path, Number.POSITIVE_INFINITY, (line, whole) => {
+  const check = new JournalCheck();
+  eachLine(path, Number.POSITIVE_INFINITY, (line, whole) => check.add(line, whole));
+  return check.result();
+}
+
+class JournalCheck {
+  readonly #hash = newSealer();
+  #lines = 0;
+  #bytes = 0;
+  /** Up to the last seal that holds. */
+  #believed = { lines: 0, bytes: 0 };
+  #ended = false;
+  #tornBytes = 0;
+  #problem: string | undefined;
+
+  add(line: Buffer, whole: boolean): 'go on' | 'stop' {
+    this.#problem = this.#problemWith(line, whole);
+    if (this.#problem !== undefined) return 'stop';
     if (!whole) {
-      torn = line.length;
+      this.#tornBytes = line.length;
       return 'stop';
     }
-    lines += 1;
+    this.#hash.update(line).update('\n');
+    this.#lines += 1;
+    this.#bytes += line.length + 1;
     if (isSealed(line)) {
-      if (!sealHolds(hash, line)) {
-        damage = { line: lines, problem: 'the seal does not agree with the lines before it' };
-        return 'stop';
-      }
-      believed = { lines, bytes: bytes + line.length + 1 };
-      ended = line.includes('"event":"ended"');
-    } else if (ended || line.length === 0 || line.length > longestLine || line[0] !== 0x7b || line.at(-1) !== 0x7d) {
-      damage = { line: lines, problem: ended ? 'there is a line after the end' : 'the line is no event' };
-      return 'stop';
+      this.#believed = { lines: this.#lines, bytes: this.#bytes };
+      this.#ended = line.includes('"event":"ended"');
     }
-    hash.update(line).update('\n');
-    bytes += line.length + 1;
     return 'go on';
-  });
-  if (damage !== undefined) return { kind: 'damaged', ...believed, ...damage };
-  if (ended && torn === 0) return { kind: 'whole', lines, bytes };
-  return { kind: 'cut-off', lines, bytes, tornBytes: torn };
+  }
+
+  result(): Integrity {
+    const seen = { lines: this.#lines, bytes: this.#bytes };
+    if (this.#problem !== undefined) {
+      return { kind: 'damaged', ...this.#believed, line: this.#lines + 1, problem: this.#problem };
+    }
+    return this.#ended
+      ? { kind: 'whole', ...seen }
+      : { kind: 'cut-off', ...seen, tornBytes: this.#tornBytes };
+  }
+
+  #problemWith(line: Buffer, whole: boolean): string | undefined {
+    if (this.#ended) return 'there is more after the end';
+    if (!whole) return undefined;
+    if (isSealed(line)) {
+      return sealHolds(this.#hash, line) ? undefined : 'the seal does not agree with the lines before it';
+    }
+    const isObject = line[0] === 0x7b && line.at(-1) === 0x7d && line.length <= longestLine;
+    return isObject ? undefined : 'the line is no event';
+  }
 }
 
 /**
  * Hands over the events of a journal in order, as far as `integrity` believes it.
  * A line that is no event ends the reading; the integrity that comes back says so.
  */
-export function readJournal(path: string, integrity: Integrity, visit: (event: TimedEvent) => void): Integrity {
+export function readJournal(
+  path: string,
+  integrity: Integrity,
+  visit: (event: TimedEvent) => void,
+): Integrity {
   let lines = 0;
   let bytes = 0;
   let result = integrity;
@@ -75,7 +105,11 @@ export function readJournal(path: string, integrity: Integrity, visit: (event: T
 }
 
 /** Calls back for each line without its end; `whole` is false for a last line that has none. */
-function eachLine(path: string, upTo: number, visit: (line: Buffer, whole: boolean) => 'go on' | 'stop'): void {
+function eachLine(
+  path: string,
+  upTo: number,
+  visit: (line: Buffer, whole: boolean) => 'go on' | 'stop',
+): void {
   let file: number;
   try {
     file = openSync(path, 'r');
@@ -90,7 +124,8 @@ function eachLine(path: string, upTo: number, visit: (line: Buffer, whole: boole
       const count = readSync(file, chunk, 0, Math.min(chunkSize, left), null);
       if (count === 0) break;
       left -= count;
-      const data = kept.length === 0 ? chunk.subarray(0, count) : Buffer.concat([kept, chunk.subarray(0, count)]);
+      const data =
+        kept.length === 0 ? chunk.subarray(0, count) : Buffer.concat([kept, chunk.subarray(0, count)]);
       let start = 0;
       for (let end = data.indexOf(0x0a, kept.length); end !== -1; end = data.indexOf(0x0a, start)) {
         if (visit(data.subarray(start, end), true) === 'stop') return;
@@ -131,7 +166,8 @@ function parseEvent(line: string, first: boolean): TimedEvent | undefined {
   } catch {
     return undefined;
   }
-  if (typeof event.t !== 'number' || typeof event.event !== 'string' || !knownEvents.has(event.event)) return undefined;
+  if (typeof event.t !== 'number' || typeof event.event !== 'string' || !knownEvents.has(event.event))
+    return undefined;
   if (first !== (event.event === 'opened')) return undefined;
   if (event.event === 'opened' && event.format !== journalFormat) return undefined;
   if (event.event === 'reading' && !isReading(event)) return undefined;

@@ -37,7 +37,9 @@ export class BadRecordError extends RailproofError {
   readonly path: string;
 
   constructor(path: string, problem: string) {
-    super(`${path}: ${problem}`, { advice: 'the record was changed or made by another version; keep it, and run again' });
+    super(`${path}: ${problem}`, {
+      advice: 'the record was changed or made by another version; keep it, and run again',
+    });
     this.path = path;
   }
 }

@@ -41,7 +41,8 @@ export function makeRunFolder(runs: string, began: Date, module: string, procedu
       mkdirSync(path);
       return runFolderAt(path);
     } catch (cause) {
-      if ((cause as NodeJS.ErrnoException).code !== 'EEXIST' || attempt > 999) throw new RecordWriteError(path, cause);
+      if ((cause as NodeJS.ErrnoException).code !== 'EEXIST' || attempt > 999)
+        throw new RecordWriteError(path, cause);
     }
   }
 }

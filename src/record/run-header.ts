@@ -69,7 +69,9 @@ const headerSchema = z.object({
   }),
   procedure: z.object({ name: z.string(), title: z.string(), cautions: z.array(z.string()) }),
   /** In order; `settings` are the step's parameters in words and numbers, as its kind understood them. */
-  steps: z.array(z.object({ kind: z.string(), summary: z.string(), settings: z.record(z.string(), z.unknown()) })),
+  steps: z.array(
+    z.object({ kind: z.string(), summary: z.string(), settings: z.record(z.string(), z.unknown()) }),
+  ),
   criteria: z.array(z.object({ finding: z.string(), requirement })),
   derating: z.object({ margin: z.number(), aboveNameplate: z.enum(['never', 'after-soak']) }),
   instruments: z.array(instrument),

@@ -1,7 +1,10 @@
 import { stripVTControlCharacters } from 'node:util';
 
 /** Rows of cells as lines: columns two spaces apart, numbers flush right, no blanks at the end. */
-export function alignTable(rows: readonly (readonly string[])[], sides: readonly ('left' | 'right')[]): string[] {
+export function alignTable(
+  rows: readonly (readonly string[])[],
+  sides: readonly ('left' | 'right')[],
+): string[] {
   const widths = sides.map((_, column) => Math.max(0, ...rows.map((row) => widthOf(row[column] ?? ''))));
   const used = sides.map((_, column) => (widths[column] ?? 0) > 0);
   return rows.map((row) =>
@@ -19,5 +22,6 @@ function pad(text: string, width: number, side: 'left' | 'right'): string {
 }
 
 function widthOf(text: string): number {
-  return [...stripVTControlCharacters(text)].length;
+  // Code points, as no table of ours holds anything wider: µ, Ω and ± are one column each.
+  return Array.from(stripVTControlCharacters(text)).length;
 }

@@ -1,5 +1,4 @@
 import type { Finding } from '../analysis/finding.js';
-import type { Dimension } from '../quantity/quantity.js';
 import { toJsonUnit, ucumCode } from '../quantity/ucum.js';
 import { endedHow, type Result } from './result.js';
 
@@ -35,7 +34,8 @@ export function resultAsJson(result: Result): object {
 
 function findingAsJson(finding: Finding): object {
   const { dimension, interval, standardUncertainty } = finding;
-  const inUnit = (value: number): number => (dimension === null ? value : toJsonUnit(value, dimension as Dimension));
+  const inUnit = (value: number): number =>
+    dimension === null ? value : toJsonUnit(value, dimension);
   return {
     name: finding.name,
     value: typeof finding.value === 'number' ? inUnit(finding.value) : finding.value,

@@ -45,7 +45,8 @@ function warnings(result: Result, style: Style): string[] {
       `DAMAGED RECORD: line ${integrity.line} of the journal: ${integrity.problem}. What follows rests on the first ${integrity.lines} lines.`,
     );
   }
-  if (how === 'cut-off') lines.push('CUT OFF: the record ends without an end; what follows is what is whole.');
+  if (how === 'cut-off')
+    lines.push('CUT OFF: the record ends without an end; what follows is what is whole.');
   if (how === 'stopped') lines.push(`STOPPED: ${reason ?? ''}`);
   if (how === 'failed') lines.push(`FAILED: ${reason ?? ''}`);
   return lines.map((line) => style.warn(line));
@@ -67,10 +68,21 @@ function findingsTable({ findings }: Result, style: Style): string {
   const rows = findings.map((finding) => {
     const { value, uncertainty, unit } = columns(finding);
     const plusMinus = uncertainty === '' ? '' : '±';
-    return [finding.name, value, plusMinus, uncertainty, unit, finding.step === null ? '' : `step ${finding.step}`, finding.note];
+    return [
+      finding.name,
+      value,
+      plusMinus,
+      uncertainty,
+      unit,
+      finding.step === null ? '' : `step ${finding.step}`,
+      finding.note,
+    ];
   });
   const table = alignTable(rows, ['left', 'right', 'left', 'right', 'left', 'left', 'left']);
-  return [style.strong('Findings') + '   value ± expanded uncertainty, 95 %', ...table.map((row) => `  ${row}`)].join('\n');
+  return [
+    style.strong('Findings') + '   value ± expanded uncertainty, 95 %',
+    ...table.map((row) => `  ${row}`),
+  ].join('\n');
 }
 
 function columns(finding: Finding): UncertainText {
@@ -93,12 +105,7 @@ function derivation({ findings }: Result, style: Style): string {
   const amps = (value: number): string => formatQuantity(value, 'current', { significant: 4 });
   const rows = [
     ['', amps(Number(usable.value)), 'usable-current', usable.note],
-    ...recommended.factors.map(({ name, factor, reason }) => [
-      '×',
-      factor.toFixed(3),
-      name,
-      reason,
-    ]),
+    ...recommended.factors.map(({ name, factor, reason }) => ['×', factor.toFixed(3), name, reason]),
     ['=', amps(Number(recommended.value)), 'recommended-current', recommended.note],
   ];
   const table = alignTable(rows, ['left', 'right', 'left', 'left']);
@@ -140,6 +147,8 @@ function footing({ header, evidence, integrity }: Result): string {
     ({ role, identity, address, driver }) => `${role}: ${identity}, ${driver}, ${address}`,
   );
   const journal =
-    integrity.kind === 'whole' ? 'journal whole, every seal holds' : `journal ${integrity.kind}, ${integrity.lines} lines believed`;
+    integrity.kind === 'whole'
+      ? 'journal whole, every seal holds'
+      : `journal ${integrity.kind}, ${integrity.lines} lines believed`;
   return [...instruments, `${evidence.readings} readings; ${journal}`].join('\n');
 }

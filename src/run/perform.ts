@@ -82,9 +82,10 @@ async function begin({ plan, bench, journal, operator, signal }: Performance): P
   await checkInputIsOff(bench);
   for (const caution of plan.procedure.cautions) {
     signal.throwIfAborted();
-    const acknowledged = await operator.acknowledge(caution, cautionTexts[caution]);
-    if (acknowledged === 'refused') throw new StoppedByOperator(`the caution "${caution}" was not acknowledged`);
-    journal.append({ event: 'caution', name: caution, by: acknowledged.by });
+    const acknowledged = await operator.acknowledge(caution, cautionTexts[caution], signal);
+    if (acknowledged === 'refused')
+      throw new StoppedByOperator(`the caution "${caution}" was not acknowledged`);
+    journal.append({ event: 'caution', name: caution, by: acknowledged });
   }
   await bench.load.prepare();
   if (plan.steps.some((step) => step.kind.needs.liveModule)) {
@@ -92,7 +93,15 @@ async function begin({ plan, bench, journal, operator, signal }: Performance): P
   }
 }
 
-async function goThrough({ plan, bench, journal, operator, clock, signal, watch }: Performance): Promise<void> {
+async function goThrough({
+  plan,
+  bench,
+  journal,
+  operator,
+  clock,
+  signal,
+  watch,
+}: Performance): Promise<void> {
   const known = { ...plan.known };
   const limits = { ...plan.ceilings, ratedVoltage: plan.module.rated.voltage };
   for (const [index, planned] of plan.steps.entries()) {

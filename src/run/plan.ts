@@ -72,7 +72,8 @@ export function makePlan(
   const measured = new Set<string>(Object.keys(known));
   const steps = procedure.steps.map((step) => {
     const kind = stepKinds.find((one) => one.kind === step.kind);
-    if (kind === undefined) throw new Error(`step kind ${step.kind} passed the procedure's schema and is not known`);
+    if (kind === undefined)
+      throw new Error(`step kind ${step.kind} passed the procedure's schema and is not known`);
     problems.push(...problemsOf(step, kind, measured, known, ceilings));
     for (const name of kind.measures) measured.add(name);
     const { parameters } = step;

@@ -4,10 +4,6 @@ import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 export class StoppedByOperator extends RailproofError {
   readonly code = 'STOPPED_BY_OPERATOR';
   readonly exitCode = exitCodes.stopped;
-
-  constructor(what: string) {
-    super(what);
-  }
 }
 
 /** The procedure asks for things only a person can do, and there is nobody. */

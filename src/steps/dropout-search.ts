@@ -17,7 +17,9 @@ const parameters = z.strictObject({
     above: 0,
     most: 0.5,
   }).prefault('5 %'),
-  climb: count('how many steps of the coarse climb lead to the ceiling', { least: 2, most: 1000 }).default(10),
+  climb: count('how many steps of the coarse climb lead to the ceiling', { least: 2, most: 1000 }).default(
+    10,
+  ),
   dwell: quantity('time', 'settling before the first reading of a probe', { least: 0 }).prefault('300 ms'),
   readings: count('how many readings at a probe', { least: 2, most: 1000 }).default(5),
   watch: quantity('time', 'how long the first overload is watched, to see how the module limits', {
@@ -46,6 +48,7 @@ export const dropoutSearch = defineStep({
       context,
     );
     const bracket = await search.run();
-    if (bracket.dropped !== undefined) context.known['dropout-current'] = (bracket.held + bracket.dropped) / 2;
+    if (bracket.dropped !== undefined)
+      context.known['dropout-current'] = (bracket.held + bracket.dropped) / 2;
   },
 });

@@ -18,16 +18,21 @@ export const loadRamp = defineStep({
     points: count('how many points, both ends included', { least: 2, most: 10_000 }).default(21),
     dwell: quantity('time', 'settling before the first reading of a point', { least: 0 }).prefault('500 ms'),
     readings: count('how many readings at a point', { least: 2, most: 10_000 }).default(5),
-    sag: quantity('ratio', 'the ramp ends where the voltage has fallen by this part of the open-circuit voltage', {
-      above: 0,
-      most: 0.5,
-    }).prefault('20 %'),
+    sag: quantity(
+      'ratio',
+      'the ramp ends where the voltage has fallen by this part of the open-circuit voltage',
+      {
+        above: 0,
+        most: 0.5,
+      },
+    ).prefault('20 %'),
   }),
   measures: [],
   needs: { liveModule: true, operator: 'never' },
   references: ({ from, to }) => ({ from, to }),
   currents: ['from', 'to'],
-  describe: ({ points, from, to }) => `${points} points from ${formatShare(from, 'current')} to ${formatShare(to, 'current')}`,
+  describe: ({ points, from, to }) =>
+    `${points} points from ${formatShare(from, 'current')} to ${formatShare(to, 'current')}`,
   duration: ({ points, dwell, readings }) => points * (dwell + readings * readingTime),
   async perform(parameters, context) {
     const { load } = context.bench;
@@ -47,7 +52,10 @@ export const loadRamp = defineStep({
         judge: holds(voltage, parameters.sag, current),
       });
       if (outcome === 'dropped') {
-        context.journal.append({ event: 'notice', text: 'the module did not hold this point; the ramp ends here' });
+        context.journal.append({
+          event: 'notice',
+          text: 'the module did not hold this point; the ramp ends here',
+        });
         break;
       }
     }

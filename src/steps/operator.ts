@@ -1,4 +1,5 @@
 import type { Dimension } from '../quantity/quantity.js';
+import type { Acknowledgement } from '../record/journal-event.js';
 
 /** Something that the person at the bench is asked to do or to read. */
 export interface OperatorRequest {
@@ -14,8 +15,8 @@ export interface OperatorRequest {
 export interface Operator {
   /** Whether there is anyone who can be asked to do things. */
   readonly present: boolean;
-  /** Shows a caution; true when it was acknowledged. */
-  acknowledge(caution: string, text: string): Promise<{ readonly by: 'operator' | '--yes' } | 'refused'>;
+  /** Shows a caution and waits for it to be acknowledged. @throws the signal's reason when the run is stopped. */
+  acknowledge(caution: string, text: string, signal: AbortSignal): Promise<Acknowledgement | 'refused'>;
   /** The answer as text; quantities with their unit. @throws the signal's reason when the run is stopped. */
   ask(request: OperatorRequest, signal: AbortSignal): Promise<string>;
 }

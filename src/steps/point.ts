@@ -84,8 +84,16 @@ export class Points {
       });
     }
     guard(taken, limits);
-    const seen = { t: clock.now(), voltage: moduleVoltage(this.#context, taken), current: valueOf(taken, 'load', 'current') };
-    show({ ...(setCurrent === undefined ? {} : { setCurrent }), voltage: seen.voltage, current: seen.current });
+    const seen = {
+      t: clock.now(),
+      voltage: moduleVoltage(this.#context, taken),
+      current: valueOf(taken, 'load', 'current'),
+    };
+    show({
+      ...(setCurrent === undefined ? {} : { setCurrent }),
+      voltage: seen.voltage,
+      current: seen.current,
+    });
     return seen;
   }
 }

@@ -21,12 +21,21 @@ export async function comeBack(
   await bench.load.inputOff();
   const byItself = await waitForVoltage(points, unloaded, least, patience);
   if (byItself.back) {
-    journal.append({ event: 'recovery', step, outcome: 'came-back', after: byItself.after, within: byItself.within });
+    journal.append({
+      event: 'recovery',
+      step,
+      outcome: 'came-back',
+      after: byItself.after,
+      within: byItself.within,
+    });
     return 'came-back';
   }
   journal.append({ event: 'recovery', step, outcome: 'stayed-off', after: patience, within: patience });
   if (!operator.present) {
-    journal.append({ event: 'notice', text: 'the module has latched off and nobody is here to cycle its input' });
+    journal.append({
+      event: 'notice',
+      text: 'the module has latched off and nobody is here to cycle its input',
+    });
     return 'stayed-off';
   }
   const request = {

@@ -123,7 +123,12 @@ export class Search {
   async #return(): Promise<void> {
     const { load } = this.#context.bench;
     for (;;) {
-      const back = await comeBack(this.#context, this.#points, this.#openCircuit * (1 - this.#parameters.sag), this.#parameters.recovery);
+      const back = await comeBack(
+        this.#context,
+        this.#points,
+        this.#openCircuit * (1 - this.#parameters.sag),
+        this.#parameters.recovery,
+      );
       if (back === 'stayed-off') {
         this.#givenUp = true;
         return;

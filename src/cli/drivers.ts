@@ -1,0 +1,100 @@
+import { readdir } from 'node:fs/promises';
+import { join } from 'node:path';
+import { realClock } from '../clock/real-clock.js';
+import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
+import { parseAddress } from '../files/connection-address.js';
+import { readDriver } from '../files/read-driver.js';
+import { tryDriver, type TrialResult } from '../instrument/trial.js';
+import { visible } from '../instrument/visible.js';
+import { alignTable } from '../report/align.js';
+import type { Streams } from './streams.js';
+import { connectors, shipped } from './wiring.js';
+
+/** `--try` and `--connection` go together. */
+export class TrialUsageError extends RailproofError {
+  readonly code = 'TRIAL_USAGE';
+  readonly exitCode = exitCodes.usage;
+
+  constructor() {
+    super('--try needs --connection, and --connection needs --try', {
+      advice: 'for example: railproof drivers --try load-input-scpi --connection tcp://127.0.0.1:5025',
+    });
+  }
+}
+
+interface Wanted {
+  readonly try?: string;
+  readonly connection?: string;
+  readonly json?: boolean;
+}
+
+/** `railproof drivers`: lists the shipped ones, or walks through one against an instrument. */
+export async function drivers(wanted: Wanted, streams: Streams): Promise<ExitCode> {
+  if ((wanted.try === undefined) !== (wanted.connection === undefined)) throw new TrialUsageError();
+  return wanted.try === undefined || wanted.connection === undefined
+    ? list(wanted.json === true, streams)
+    : tryOut(wanted.try, wanted.connection, wanted.json === true, streams);
+}
+
+async function list(json: boolean, streams: Streams): Promise<ExitCode> {
+  const names = (await readdir(shipped.drivers)).filter((name) => name.endsWith('.yaml')).sort();
+  const found = await Promise.all(
+    names.map(
+      async (name) =>
+        (await readDriver(join(shipped.drivers, name), { relativeTo: '.', shipped: shipped.drivers })).value,
+    ),
+  );
+  if (json) {
+    const listed = found.map(({ name, role, summary }) => ({ name, role, summary }));
+    streams.stdout.write(`${JSON.stringify({ format: 'railproof/drivers 1', drivers: listed }, null, 2)}\n`);
+  } else {
+    const rows = found.map(({ name, role, summary }) => [name, role, summary]);
+    streams.stdout.write(`${alignTable(rows, ['left', 'left', 'left']).join('\n')}\n`);
+  }
+  return exitCodes.conforms;
+}
+
+async function tryOut(name: string, address: string, json: boolean, streams: Streams): Promise<ExitCode> {
+  const { value: driver } = await readDriver(name, { relativeTo: '.', shipped: shipped.drivers });
+  const connection = await connectors(realClock)(parseAddress(address), driver, driver.role);
+  const results: TrialResult[] = [];
+  try {
+    if (!json) streams.stderr.write(`${driver.name} at ${connection.address}; the input stays off\n`);
+    for await (const result of tryDriver({ driver, connection, clock: realClock })) {
+      results.push(result);
+      if (!json) streams.stdout.write(`${resultLine(result)}\n`);
+    }
+  } finally {
+    await connection.close();
+  }
+  const understood = results.filter((result) => result.verdict === 'understood').length;
+  const sent = results.filter((result) => result.verdict !== 'not-sent').length;
+  if (json) {
+    streams.stdout.write(
+      `${JSON.stringify({ format: 'railproof/trial 1', driver: driver.name, results }, null, 2)}\n`,
+    );
+  } else {
+    streams.stdout.write(`${understood} of ${sent} messages understood\n`);
+  }
+  return results.some(({ verdict }) => verdict === 'refused' || verdict === 'silent')
+    ? exitCodes.doesNotConform
+    : exitCodes.conforms;
+}
+
+const widthOfVerdict = 11;
+const widthOfName = 16;
+const widthOfSent = 22;
+
+function resultLine({ verdict, name, sent, received, detail, seconds }: TrialResult): string {
+  const answered = received === undefined ? '' : `→ ${received}`;
+  const time = verdict === 'not-sent' ? '' : `${Math.round(seconds * 1000)} ms`;
+  return [
+    verdict.padEnd(widthOfVerdict),
+    name.padEnd(widthOfName),
+    visible(sent).padEnd(widthOfSent),
+    time.padStart(7),
+    [answered, detail].filter((part) => part !== '').join('  '),
+  ]
+    .join(' ')
+    .trimEnd();
+}

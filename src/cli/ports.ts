@@ -1,0 +1,18 @@
+import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import { listPorts } from '../instrument/ports.js';
+import { alignTable } from '../report/align.js';
+import type { Streams } from './streams.js';
+
+/** `railproof ports`: the serial ports of this machine, as a bench file would name them. */
+export async function ports({ json }: { readonly json?: boolean }, streams: Streams): Promise<ExitCode> {
+  const found = await listPorts();
+  if (json === true) {
+    streams.stdout.write(`${JSON.stringify({ format: 'railproof/ports 1', ports: found }, null, 2)}\n`);
+  } else if (found.length === 0) {
+    streams.stdout.write('No serial ports here. Is the adapter plugged in?\n');
+  } else {
+    const rows = found.map(({ path, description }) => [`serial:${path}?baud=9600`, description]);
+    streams.stdout.write(`${alignTable(rows, ['left', 'left']).join('\n')}\n`);
+  }
+  return exitCodes.conforms;
+}

@@ -1,0 +1,161 @@
+import { readFileSync } from 'node:fs';
+import { Command, CommanderError, Option } from 'commander';
+import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import { errorText } from './error-text.js';
+import { statusOfError } from './exit-status.js';
+import type { Streams } from './streams.js';
+
+/**
+ * The command line. Each command is a file of its own that is loaded only when it is called, so that
+ * `--version` costs next to nothing. Results go to stdout, talk to stderr.
+ */
+export async function main(argv: readonly string[], streams: Streams): Promise<ExitCode> {
+  let status: ExitCode = exitCodes.conforms;
+  const program = commands(streams, (result) => {
+    status = result;
+  });
+  try {
+    await program.parseAsync([...argv], { from: 'user' });
+    return status;
+  } catch (error) {
+    if (error instanceof CommanderError) return error.exitCode === 0 ? exitCodes.conforms : exitCodes.usage;
+    streams.stderr.write(`${errorText(error)}\n`);
+    return statusOfError(error);
+  }
+}
+
+function commands(streams: Streams, done: (status: ExitCode) => void): Command {
+  const program = new Command('railproof')
+    .description(
+      'Measures what a power-supply module really delivers, on an electronic load and a meter, and says how hard it may be worked.',
+    )
+    .version(version())
+    .exitOverride()
+    .configureOutput({
+      writeOut: (text) => streams.stdout.write(text),
+      writeErr: (text) => streams.stderr.write(text),
+    })
+    .showHelpAfterError('(railproof help <command> shows examples)')
+    .addHelpText('after', exitStatusHelp);
+
+  const command = (usage: string, description: string, example: string): Command =>
+    program.command(usage).description(description).addHelpText('after', `\nExample:\n  ${example}\n`);
+  const json = (): Option => new Option('--json', 'print one JSON object instead of text');
+
+  command(
+    'run <procedure>',
+    'perform a procedure on a module: a shipped one by its name, or a file',
+    'railproof run real-limit --bench fixtures/benches/nursery.yaml --module fixtures/modules/K1.yaml',
+  )
+    .requiredOption('--bench <file>', 'the bench: instruments, leads, hard limits')
+    .requiredOption('--module <file...>', 'the module under test; repeated, in the order of the circuit')
+    .option('--runs <folder>', 'where records are kept', 'runs')
+    .option('--yes', 'acknowledge the cautions beforehand (for unattended benches)')
+    .option('--dry-run', 'show what would be done, and touch nothing')
+    .addOption(json())
+    .action(async (procedure: string, options: RunOptions) => {
+      const { run } = await import('./run.js');
+      done(await run({ procedure, ...options }, streams));
+    });
+
+  command(
+    'analyse <run>',
+    'findings and decisions again, from the record',
+    'railproof analyse runs/20261201T091500Z-K1-real-limit',
+  )
+    .option('--strict', 'refuse a record that was cut off or damaged')
+    .addOption(json())
+    .action(async (run: string, options: { strict?: boolean; json?: boolean }) => {
+      const { analyseRecord } = await import('./analyse.js');
+      done(analyseRecord({ run, ...options }, streams));
+    });
+
+  command(
+    'check <file...>',
+    'are these files right? Prints each mistake with its line and column',
+    'railproof check fixtures/benches/nursery.yaml fixtures/modules/K1.yaml',
+  ).action(async (files: string[]) => {
+    const { check } = await import('./check.js');
+    done(await check(files, streams));
+  });
+
+  command(
+    'drivers',
+    'the shipped instrument drivers; --try walks through one against an instrument, input kept off',
+    'railproof drivers --try load-input-scpi --connection tcp://127.0.0.1:5025',
+  )
+    .option('--try <driver>', 'a shipped driver by its name, or a file')
+    .option('--connection <address>', 'where the instrument is: tcp://host:port or serial:path?baud=9600')
+    .addOption(json())
+    .action(async (options: { try?: string; connection?: string; json?: boolean }) => {
+      const { drivers } = await import('./drivers.js');
+      done(await drivers(options, streams));
+    });
+
+  command('ports', 'serial ports of this machine', 'railproof ports')
+    .addOption(json())
+    .action(async (options: { json?: boolean }) => {
+      const { ports } = await import('./ports.js');
+      done(await ports(options, streams));
+    });
+
+  command(
+    'simulate <bench>',
+    'serve a simulated bench in real time, on loopback TCP or on ptys; prints the bench file to use with it',
+    'railproof simulate fixtures/benches/nursery.yaml > live.yaml',
+  )
+    .option('--pty', 'on pseudo-terminals, as serial instruments (needs socat)')
+    .action(async (bench: string, options: { pty?: boolean }) => {
+      const { simulate } = await import('./simulate.js');
+      done(await simulate({ bench, ...options }, streams));
+    });
+
+  command(
+    'safe',
+    'make a bench safe now: the load off, and read back',
+    'railproof safe --bench fixtures/benches/nursery.yaml',
+  )
+    .requiredOption('--bench <file>', 'the bench')
+    .action(async (options: { bench: string }) => {
+      const { safe } = await import('./safe.js');
+      done(await safe(options, streams));
+    });
+
+  command('runs [folder]', 'the records here', 'railproof runs runs')
+    .addOption(json())
+    .action(async (folder: string | undefined, options: { json?: boolean }) => {
+      const { runs } = await import('./runs.js');
+      done(runs({ folder: folder ?? 'runs', ...options }, streams));
+    });
+
+  command(
+    'schema <kind>',
+    'the JSON Schema of a kind of file (module, bench, driver, procedure), for editors',
+    'railproof schema procedure > procedure.schema.json',
+  ).action(async (kind: string) => {
+    const { schema } = await import('./schema.js');
+    done(schema(kind, streams));
+  });
+
+  return program;
+}
+
+interface RunOptions {
+  readonly bench: string;
+  readonly module: readonly string[];
+  readonly runs: string;
+  readonly yes?: boolean;
+  readonly dryRun?: boolean;
+  readonly json?: boolean;
+}
+
+const exitStatusHelp = `
+Exit status: 0 conforms, or nothing to judge; 1 does not conform; 2 undecided; 3 stopped by a guard or by
+the operator; 64 usage; 65 bad file; 66 missing file; 69 instrument unreachable or lost; 70 a fault of ours;
+74 a file could not be written.
+`;
+
+function version(): string {
+  const text = readFileSync(new URL('../../package.json', import.meta.url), 'utf8');
+  return (JSON.parse(text) as { version: string }).version;
+}

@@ -1,0 +1,108 @@
+import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import { alignTable } from '../report/align.js';
+import { resultAsJson } from '../report/json.js';
+import { styleFor } from '../report/style.js';
+import { resultAsText } from '../report/text.js';
+import type { Plan } from '../run/plan.js';
+import { OperatorAbsentError } from '../run/stopped.js';
+import { TerminalOperator } from '../run/terminal-operator.js';
+import type { Operator } from '../steps/operator.js';
+import { errorText } from './error-text.js';
+import { statusOfError, statusOfOutcome } from './exit-status.js';
+import { loadPlan } from './load-plan.js';
+import { performPlan, type PlanPerformed } from './perform-plan.js';
+import { ProgressLine } from './progress-line.js';
+import { simulatedOperator } from './simulated-operator.js';
+import { stopOnSignals } from './stop-signals.js';
+import type { Streams } from './streams.js';
+import { type World, worldOf } from './wiring.js';
+
+export interface RunWanted {
+  readonly procedure: string;
+  readonly bench: string;
+  readonly module: readonly string[];
+  readonly runs: string;
+  readonly yes?: boolean;
+  readonly dryRun?: boolean;
+  readonly json?: boolean;
+}
+
+/** `railproof run`: performs a procedure and prints what it shows. */
+export async function run(wanted: RunWanted, streams: Streams): Promise<ExitCode> {
+  const loaded = await loadPlan({ procedure: wanted.procedure, bench: wanted.bench, modules: wanted.module });
+  if (wanted.dryRun === true) {
+    streams.stdout.write(planAsText(loaded.plan));
+    return exitCodes.conforms;
+  }
+  const world = await worldOf(loaded.plan.bench, loaded.plan.drivers);
+  const operator = operatorFor(world, wanted.yes === true, streams);
+  requireOperator(loaded.plan, operator, wanted.yes === true);
+  const stop = stopOnSignals(streams);
+  const watch = new ProgressLine(streams.stderr, loaded.plan, world.clock);
+  try {
+    const performed = await performPlan(loaded, world, {
+      runs: wanted.runs,
+      operator,
+      signal: stop.signal,
+      watch,
+    });
+    watch.clear();
+    return tell(performed, wanted.json === true, streams);
+  } finally {
+    stop.release();
+  }
+}
+
+function tell({ result, ending, safety, folder }: PlanPerformed, json: boolean, streams: Streams): ExitCode {
+  streams.stdout.write(
+    json
+      ? `${JSON.stringify(resultAsJson(result), null, 2)}\n`
+      : resultAsText(result, styleFor(streams.stdout, streams.environment)),
+  );
+  streams.stderr.write(`record: ${folder.path}\n`);
+  if (ending.how !== 'completed') streams.stderr.write(`${errorText(ending.error)}\n`);
+  if (safety.kind === 'unconfirmed') {
+    streams.stderr.write(
+      `\nIt could not be confirmed that the load is off: ${safety.why}\n${safety.advice}\n`,
+    );
+  } else {
+    streams.stderr.write('The load is off; it was read back.\n');
+  }
+  if (ending.how !== 'completed') return statusOfError(ending.error);
+  return safety.kind === 'unconfirmed' ? exitCodes.instrument : statusOfOutcome(result.outcome);
+}
+
+function operatorFor(world: World, yes: boolean, streams: Streams): Operator {
+  return world.simulation === undefined
+    ? new TerminalOperator({ input: streams.stdin, output: streams.stderr, yes })
+    : simulatedOperator(world.simulation);
+}
+
+/** A procedure that needs a person does not begin without one. @throws OperatorAbsentError */
+function requireOperator(plan: Plan, operator: Operator, yes: boolean): void {
+  if (operator.present) return;
+  const needing = plan.steps.flatMap(({ kind }, index) =>
+    kind.needs.operator === 'always' ? [`step ${index + 1} (${kind.kind})`] : [],
+  );
+  if (!yes && plan.procedure.cautions.length > 0) needing.push('its cautions');
+  if (needing.length > 0) throw new OperatorAbsentError(needing);
+}
+
+function planAsText(plan: Plan): string {
+  const rows = plan.steps.map(({ kind, summary, duration }, index) => [
+    `${index + 1}`,
+    kind.kind,
+    summary,
+    `about ${formatQuantity(Math.ceil(duration), 'time')}`,
+  ]);
+  return [
+    `${plan.procedure.name}: ${plan.procedure.title}`,
+    `module ${plan.modules.map((module) => module.name).join(', ')} on ${plan.bench.name}`,
+    ...alignTable(rows, ['right', 'left', 'left', 'left']).map((row) => `  ${row}`),
+    `never above ${formatQuantity(plan.ceilings.current.value, 'current')}, ` +
+      `${formatQuantity(plan.ceilings.voltage.value, 'voltage')}, ${formatQuantity(plan.ceilings.power.value, 'power')}`,
+    `about ${formatQuantity(Math.ceil(plan.duration / 60) * 60, 'time')} in all; nothing was touched`,
+    '',
+  ].join('\n');
+}

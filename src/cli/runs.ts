@@ -1,0 +1,88 @@
+import { existsSync, readdirSync, readFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { z } from 'zod';
+import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import { NoRecordError } from '../record/record-error.js';
+import { runFolderAt } from '../record/run-folder.js';
+import { alignTable } from '../report/align.js';
+import type { Streams } from './streams.js';
+
+/** `railproof runs`: the records of a folder, oldest first, a line each. */
+export function runs(
+  wanted: { readonly folder: string; readonly json?: boolean },
+  streams: Streams,
+): ExitCode {
+  const names = namesIn(wanted.folder);
+  const rows: string[][] = [];
+  const listed: object[] = [];
+  for (const name of names) {
+    const entry = entryOf(join(wanted.folder, name));
+    const { ended, outcome, recommended } = entry;
+    rows.push([
+      name,
+      ended,
+      outcome,
+      recommended === null ? '' : formatQuantity(recommended, 'current', { significant: 3 }),
+    ]);
+    listed.push({ run: name, ...entry });
+  }
+  if (wanted.json === true) {
+    streams.stdout.write(`${JSON.stringify({ format: 'railproof/runs 1', runs: listed }, null, 2)}\n`);
+  } else if (rows.length === 0) {
+    streams.stdout.write(`No records in ${wanted.folder}.\n`);
+  } else {
+    const head = ['record', 'ended', 'outcome', 'recommended'];
+    streams.stdout.write(`${alignTable([head, ...rows], ['left', 'left', 'left', 'right']).join('\n')}\n`);
+  }
+  return exitCodes.conforms;
+}
+
+function namesIn(folder: string): string[] {
+  try {
+    return readdirSync(folder)
+      .filter((name) => existsSync(join(folder, name, 'run.json')))
+      .sort();
+  } catch (cause) {
+    throw new NoRecordError(folder, cause);
+  }
+}
+
+interface Entry {
+  readonly ended: string;
+  readonly outcome: string;
+  /** In amperes; null where there is none. */
+  readonly recommended: number | null;
+}
+
+const summary = z.object({
+  ended: z.string(),
+  outcome: z.string(),
+  findings: z.array(z.object({ name: z.string(), value: z.union([z.number(), z.string()]) })),
+});
+
+/**
+ * From findings.json, which is small however long the run was; a record without one was cut off, and
+ * `railproof analyse` tells more. A record that can't be read is still listed: someone may look for it.
+ */
+function entryOf(path: string): Entry {
+  let text: string;
+  try {
+    text = readFileSync(runFolderAt(path).findings, 'utf8');
+  } catch {
+    return { ended: 'cut-off', outcome: '', recommended: null };
+  }
+  const parsed = summary.safeParse(parseJson(text));
+  if (!parsed.success) return { ended: 'unreadable', outcome: '', recommended: null };
+  const { ended, outcome, findings } = parsed.data;
+  const recommended = findings.find((finding) => finding.name === 'recommended-current')?.value;
+  return { ended, outcome, recommended: typeof recommended === 'number' ? recommended : null };
+}
+
+function parseJson(text: string): unknown {
+  try {
+    return JSON.parse(text);
+  } catch {
+    return undefined;
+  }
+}

@@ -1,0 +1,44 @@
+import { realClock } from '../clock/real-clock.js';
+import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import { withAddresses } from '../files/live-bench.js';
+import { readBench } from '../files/read-bench.js';
+import { serveBench } from '../simulation/serve.js';
+import type { Streams } from './streams.js';
+import { planDrivers, readBenchDrivers } from './wiring.js';
+
+/**
+ * `railproof simulate`: serves the instruments of a simulated bench until it is told to stop. What it
+ * prints is the bench file to use with them.
+ */
+export async function simulate(
+  wanted: { readonly bench: string; readonly pty?: boolean },
+  streams: Streams,
+): Promise<ExitCode> {
+  const file = await readBench(wanted.bench);
+  const { load, meter } = planDrivers(await readBenchDrivers(file));
+  const served = await serveBench({
+    bench: file.value,
+    drivers: { load, ...(meter === undefined ? {} : { meter }) },
+    clock: realClock,
+    lines: wanted.pty === true ? 'pty' : 'tcp',
+  });
+  try {
+    streams.stdout.write(withAddresses(file.text, served.addresses));
+    for (const [role, address] of Object.entries(served.addresses))
+      streams.stderr.write(`${role}: ${address}\n`);
+    streams.stderr.write('Serving until Ctrl-C.\n');
+    await stopAsked();
+  } finally {
+    await served.close();
+  }
+  return exitCodes.conforms;
+}
+
+function stopAsked(): Promise<void> {
+  return new Promise((resolve) => {
+    for (const name of ['SIGINT', 'SIGTERM', 'SIGHUP'])
+      process.once(name, () => {
+        resolve();
+      });
+  });
+}

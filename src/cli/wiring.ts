@@ -1,0 +1,87 @@
+import { fileURLToPath } from 'node:url';
+import { dirname } from 'node:path';
+import { findingNames } from '../analysis/finding-names.js';
+import type { Clock } from '../clock/clock.js';
+import { realClock } from '../clock/real-clock.js';
+import { VirtualClock } from '../clock/virtual-clock.js';
+import type { Bench } from '../files/bench.js';
+import type { Driver } from '../files/driver.js';
+import { readDriver } from '../files/read-driver.js';
+import type { FileRead } from '../files/read-text.js';
+import { type Connect, connectorFor } from '../instrument/connect.js';
+import type { PlanDrivers } from '../run/plan.js';
+import { stepKinds } from '../steps/index.js';
+import type { OpenedSimulation } from '../simulation/open-simulation.js';
+
+/** Everything is wired together here: no other room knows all of these. */
+
+const packageFolder = new URL('../../', import.meta.url);
+
+export const shipped = {
+  procedures: fileURLToPath(new URL('procedures/', packageFolder)),
+  drivers: fileURLToPath(new URL('drivers/', packageFolder)),
+};
+
+export const vocabulary = { stepKinds, findings: findingNames };
+
+export interface BenchDrivers {
+  readonly load: FileRead<Driver>;
+  readonly meter?: FileRead<Driver>;
+}
+
+/** The drivers that a bench names, shipped or beside the bench file. @throws BadFileError, MissingFileError */
+export async function readBenchDrivers(bench: FileRead<Bench>): Promise<BenchDrivers> {
+  const where = { relativeTo: dirname(bench.path), shipped: shipped.drivers };
+  const { load, meter } = bench.value.instruments;
+  return {
+    load: await readDriver(load.driver, where),
+    ...(meter === undefined ? {} : { meter: await readDriver(meter.driver, where) }),
+  };
+}
+
+export function planDrivers(drivers: BenchDrivers): PlanDrivers {
+  return { load: drivers.load.value, ...(drivers.meter === undefined ? {} : { meter: drivers.meter.value }) };
+}
+
+/** How a bench is reached, and the time that passes there. */
+export interface World {
+  readonly connect: Connect;
+  readonly clock: Clock;
+  /** Where the bench is simulated. */
+  readonly simulation: OpenedSimulation | undefined;
+}
+
+/**
+ * The ways to connect that a bench needs, each loaded only when it is used. Where every instrument is
+ * simulated or replayed, time is virtual: an hour passes in a moment.
+ */
+export async function worldOf(bench: Bench, drivers: PlanDrivers): Promise<World> {
+  const kinds = Object.values(bench.instruments).map((place) => place.connection.kind);
+  const clock = kinds.every((kind) => kind === 'simulated' || kind === 'replay')
+    ? new VirtualClock(realClock.wall())
+    : realClock;
+  const simulation =
+    bench.simulation === undefined || !kinds.includes('simulated')
+      ? undefined
+      : (await import('../simulation/open-simulation.js')).openSimulation({
+          simulation: bench.simulation,
+          clock,
+          drivers: { load: drivers.load, ...(drivers.meter === undefined ? {} : { meter: drivers.meter }) },
+        });
+  return { connect: connectors(clock, simulation), clock, simulation };
+}
+
+export function connectors(clock: Clock, simulation?: OpenedSimulation): Connect {
+  return connectorFor({
+    tcp: async (address) => (await import('../instrument/tcp-connection.js')).openTcp(address),
+    serial: async (address) => (await import('../instrument/serial-connection.js')).openSerial(address),
+    replay: async (address) =>
+      (await import('../instrument/replay-connection.js')).openReplay(address, clock),
+    ...(simulation === undefined
+      ? {}
+      : {
+          simulated: (address, driver, role) =>
+            Promise.resolve(simulation.connect(role, driver, address.dialect)),
+        }),
+  });
+}

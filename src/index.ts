@@ -1,0 +1,27 @@
+/**
+ * railproof as a library: run a procedure, read a record, analyse and judge it.
+ *
+ * @example
+ * const loaded = await loadPlan({ procedure: 'real-limit', bench: 'bench.yaml', modules: ['K1.yaml'] });
+ * const result = understand('runs/20261201T091500Z-K1-real-limit');
+ */
+export { loadPlan, type LoadedPlan } from './cli/load-plan.js';
+export { performPlan, type PlanPerformed } from './cli/perform-plan.js';
+export { worldOf, vocabulary, type World } from './cli/wiring.js';
+export { RailproofError, exitCodes, type ExitCode } from './errors/railproof-error.js';
+export { readBench } from './files/read-bench.js';
+export { readDriver } from './files/read-driver.js';
+export { readModule } from './files/read-module.js';
+export { readProcedure } from './files/read-procedure.js';
+export { analyse } from './analysis/analyse.js';
+export { type Evidence, EvidenceCollector } from './analysis/evidence.js';
+export type { Factor, Finding } from './analysis/finding.js';
+export { judge, overall, type Decision, type Outcome } from './judgement/judge.js';
+export type { JournalEvent, TimedEvent } from './record/journal-event.js';
+export { checkJournal, readJournal, type Integrity } from './record/journal-reader.js';
+export { readHeader, type RunHeader } from './record/run-header.js';
+export { understand } from './report/understand.js';
+export { resultAsJson } from './report/json.js';
+export { resultAsText } from './report/text.js';
+export type { Result } from './report/result.js';
+export type { Operator, OperatorRequest } from './steps/operator.js';

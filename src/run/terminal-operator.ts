@@ -1,0 +1,70 @@
+import { createInterface } from 'node:readline/promises';
+import type { Readable, Writable } from 'node:stream';
+import type { Acknowledgement } from '../record/journal-event.js';
+import type { Operator, OperatorRequest } from '../steps/operator.js';
+import { StoppedByOperator } from './stopped.js';
+
+interface Terminal {
+  readonly input: Readable & { readonly isTTY?: boolean };
+  readonly output: Writable;
+  /** Cautions are acknowledged beforehand. */
+  readonly yes: boolean;
+}
+
+/** The person at the keyboard. Talk goes to stderr, so that stdout carries results only. */
+export class TerminalOperator implements Operator {
+  readonly present: boolean;
+  readonly #terminal: Terminal;
+
+  constructor(terminal: Terminal) {
+    this.#terminal = terminal;
+    this.present = terminal.input.isTTY === true;
+  }
+
+  async acknowledge(
+    caution: string,
+    text: string,
+    signal: AbortSignal,
+  ): Promise<Acknowledgement | 'refused'> {
+    this.#say(`\nCaution, ${caution.replaceAll('-', ' ')}: ${text}\n`);
+    if (this.#terminal.yes) {
+      this.#say('Acknowledged by --yes.\n');
+      return '--yes';
+    }
+    const answer = await this.#question('Understood and taken care of? Type yes: ', signal);
+    return /^\s*y(es)?\s*$/i.test(answer) ? 'operator' : 'refused';
+  }
+
+  async ask({ text, answer }: OperatorRequest, signal: AbortSignal): Promise<string> {
+    if (answer === 'done') {
+      await this.#question(`\n${text}\nPress Enter when it is done. `, signal);
+      return 'done';
+    }
+    return (await this.#question(`\n${text}\n> `, signal)).trim();
+  }
+
+  #say(text: string): void {
+    this.#terminal.output.write(text);
+  }
+
+  /** At the end of the input a question would never be answered, so that is taken as a wish to stop. */
+  async #question(text: string, signal: AbortSignal): Promise<string> {
+    const closed = new AbortController();
+    const lines = createInterface({ input: this.#terminal.input, output: this.#terminal.output });
+    lines.once('close', () => {
+      closed.abort(new StoppedByOperator('the terminal was closed at a question'));
+    });
+    lines.once('SIGINT', () => {
+      closed.abort(new StoppedByOperator('stopped with Ctrl-C at a question'));
+    });
+    try {
+      return await lines.question(text, { signal: AbortSignal.any([signal, closed.signal]) });
+    } catch (error) {
+      if (signal.aborted) throw signal.reason;
+      if (closed.signal.aborted) throw closed.signal.reason;
+      throw error;
+    } finally {
+      lines.close();
+    }
+  }
+}
