@@ -1,9 +1,9 @@
 import { bestSplit } from './break-search.js';
-import type { LevelledPoints } from './end-sums.js';
 import { fUpperTail } from './f-distribution.js';
-import { fitLine, type LineFit } from './line-fit.js';
+import { leastSquaresLine, type LeastSquaresLine } from './line-fit.js';
 import { sortedPoints } from './sorted-points.js';
 import { fitAtSplit, heightOf, heightVariance, type Piece, type SplitFit } from './split-fit.js';
+import type { LevelledPoints } from './stretches.js';
 import { requireFinite, requireSameLength } from './unfit-data-error.js';
 
 /** One of the two pieces, as a line y = intercept + slope·x with standard uncertainties. */
@@ -65,15 +65,15 @@ export function fitBrokenLine(x: ArrayLike<number>, y: ArrayLike<number>): Broke
     if (x.length > 0) requireFinite('fitBrokenLine, y', y);
     return undefined;
   }
-  const line = fitLine(sorted.x, sorted.y);
-  if (isStraightToTheLastDigit(line)) return undefined;
+  const line = leastSquaresLine('fitBrokenLine', sorted.x, sorted.y);
   const points = { ...sorted, meanX: line.meanX, meanY: line.meanY, slope: line.slope };
-  const split = bestSplit(points, first, last);
-  if (split === undefined) return undefined;
+  const { split, sumOfSquaresOfLine } = bestSplit(points, first, last);
+  if (split === undefined || isStraightToTheLastDigit(line, sumOfSquaresOfLine)) return undefined;
   const settled = fitAtSplit(points, split);
-  const delicate = settled.sumOfSquares < 1e-6 * line.sumOfSquares;
+  const delicate = settled.sumOfSquares < 1e-6 * sumOfSquaresOfLine;
   const found = delicate ? polished(settled, points, first, last) : settled;
-  return found.left.slope === found.right.slope ? undefined : described(found, line);
+  if (found.left.slope === found.right.slope) return undefined;
+  return described(found, line, sorted.x[0] as number, sumOfSquaresOfLine);
 }
 
 /** The broken line at one place. */
@@ -92,9 +92,9 @@ function admissibleSplits(x: Float64Array): readonly [first: number, last: numbe
 }
 
 /** Rounding each y to a double alone would leave residuals about as large as these. */
-function isStraightToTheLastDigit(line: LineFit): boolean {
-  const sumOfSquaresOfY = line.points * line.meanY ** 2 + line.slope ** 2 * line.spreadX + line.sumOfSquares;
-  return line.sumOfSquares <= (4 * Number.EPSILON) ** 2 * sumOfSquaresOfY;
+function isStraightToTheLastDigit(line: LeastSquaresLine, sumOfSquares: number): boolean {
+  const sumOfSquaresOfY = line.points * line.meanY ** 2 + line.slope ** 2 * line.spreadX + sumOfSquares;
+  return sumOfSquares <= (4 * Number.EPSILON) ** 2 * sumOfSquaresOfY;
 }
 
 /**
@@ -103,8 +103,8 @@ function isStraightToTheLastDigit(line: LineFit): boolean {
  */
 function polished(found: SplitFit, points: LevelledPoints, first: number, last: number): SplitFit {
   let best = found;
-  while (best.placedBy === 'point' && best.crossing !== undefined) {
-    const split = pointsUpTo(points.x, best.crossing);
+  while (best.placedBy === 'point') {
+    const split = pointsUpTo(points.x, (points.x[0] as number) + best.crossingD);
     if (split < first || split > last || split === best.split) break;
     const next = fitAtSplit(points, split);
     if (next.sumOfSquares >= best.sumOfSquares) break;
@@ -125,18 +125,23 @@ function pointsUpTo(x: Float64Array, place: number): number {
   return low;
 }
 
-function described(found: SplitFit, line: LineFit): BrokenLineFit {
-  const { breakX, left, right, sumOfSquares } = found;
+function described(
+  found: SplitFit,
+  line: LeastSquaresLine,
+  firstX: number,
+  sumOfSquaresOfLine: number,
+): BrokenLineFit {
+  const { breakD, left, right, sumOfSquares } = found;
   const degreesOfFreedom = line.points - 4;
   const variance = sumOfSquares / degreesOfFreedom;
-  const f = sumOfSquares === 0 ? Infinity : Math.max(0, (line.sumOfSquares - sumOfSquares) / 2 / variance);
-  const breakVariance = variance * (heightVariance(left, breakX) + heightVariance(right, breakX));
+  const f = sumOfSquares === 0 ? Infinity : Math.max(0, (sumOfSquaresOfLine - sumOfSquares) / 2 / variance);
+  const breakVariance = variance * (heightVariance(left, breakD) + heightVariance(right, breakD));
   return {
-    breakpoint: breakX,
+    breakpoint: firstX + breakD,
     breakpointUncertainty: Math.sqrt(breakVariance) / Math.abs(right.slope - left.slope),
-    valueAtBreak: heightOf(left, breakX) + line.meanY + line.slope * (breakX - line.meanX),
-    left: pieceWithLine(left, line, variance),
-    right: pieceWithLine(right, line, variance),
+    valueAtBreak: heightOf(left, breakD) + line.meanY + line.slope * (firstX - line.meanX + breakD),
+    left: pieceWithLine(left, line, firstX, variance),
+    right: pieceWithLine(right, line, firstX, variance),
     placedBy: found.placedBy,
     residualDeviation: Math.sqrt(variance),
     sumOfSquares,
@@ -146,14 +151,19 @@ function described(found: SplitFit, line: LineFit): BrokenLineFit {
 }
 
 /** Puts the overall line back under a piece. */
-function pieceWithLine(piece: Piece, line: LineFit, variance: number): BrokenLinePiece {
+function pieceWithLine(
+  piece: Piece,
+  line: LeastSquaresLine,
+  firstX: number,
+  variance: number,
+): BrokenLinePiece {
   const slope = line.slope + piece.slope;
-  const height = piece.heightAtMean + line.meanY + line.slope * (piece.meanX - line.meanX);
+  const height = piece.heightAtMean + line.meanY + line.slope * (firstX - line.meanX + piece.meanD);
   return {
-    intercept: height - slope * piece.meanX,
-    interceptUncertainty: Math.sqrt(variance * heightVariance(piece, 0)),
+    intercept: height - slope * (firstX + piece.meanD),
+    interceptUncertainty: Math.sqrt(variance * heightVariance(piece, -firstX)),
     slope,
-    slopeUncertainty: Math.sqrt(variance / piece.spreadX),
+    slopeUncertainty: Math.sqrt(variance / piece.spreadD),
     points: piece.points,
   };
 }

@@ -34,48 +34,14 @@ export interface LineFit {
  * @example fitLine([0, 1, 2, 3], [1, 3, 5, 7]).slope; // => 2
  */
 export function fitLine(x: ArrayLike<number>, y: ArrayLike<number>): LineFit {
-  const points = x.length;
-  requireSameLength('fitLine', x, y);
-  const originX = x[0] ?? 0;
-  const originY = y[0] ?? 0;
-  let sumX = 0;
-  let sumY = 0;
-  for (let index = 0; index < points; index += 1) {
-    sumX += (x[index] as number) - originX;
-    sumY += (y[index] as number) - originY;
-  }
-  if (!Number.isFinite(sumX + sumY)) refuse(x, y);
-  if (points < 3) throw new TooFewPointsError({ points, needed: 3, allAtOnePlace: false });
-
-  const middleX = sumX / points;
-  const middleY = sumY / points;
-  let spreadX = 0;
-  let spreadXY = 0;
-  for (let index = 0; index < points; index += 1) {
-    const fromMiddle = (x[index] as number) - originX - middleX;
-    spreadX += fromMiddle * fromMiddle;
-    spreadXY += fromMiddle * ((y[index] as number) - originY - middleY);
-  }
-  if (!Number.isFinite(spreadX)) refuse(x, y);
-  // The mean of equal values may miss them by a rounding; that is no spread.
-  if (spreadX === 0 || sameEverywhere(x))
-    throw new TooFewPointsError({ points, needed: 3, allAtOnePlace: true });
-
-  const slope = spreadXY / spreadX;
+  const through = leastSquaresLine('fitLine', x, y);
+  const { slope, meanX, meanY } = through;
   let sumOfSquares = 0;
-  for (let index = 0; index < points; index += 1) {
-    const residual =
-      (y[index] as number) - originY - middleY - slope * ((x[index] as number) - originX - middleX);
+  for (let index = 0; index < through.points; index += 1) {
+    const residual = (y[index] as number) - meanY - slope * ((x[index] as number) - meanX);
     sumOfSquares += residual * residual;
   }
-  return lineFrom({
-    points,
-    slope,
-    meanX: originX + middleX,
-    meanY: originY + middleY,
-    spreadX,
-    sumOfSquares,
-  });
+  return { ...through, ...uncertaintiesOf(through, sumOfSquares) };
 }
 
 /**
@@ -93,22 +59,56 @@ export function predictLine(
   };
 }
 
-/** The uncertainties that follow from a slope, the means, the spread of x and the residuals. */
-export function lineFrom(found: {
-  readonly points: number;
-  readonly slope: number;
-  readonly meanX: number;
-  readonly meanY: number;
-  readonly spreadX: number;
-  readonly sumOfSquares: number;
-}): LineFit {
-  const { points, slope, meanX, meanY, spreadX, sumOfSquares } = found;
+/** A line, and how the points lie that it goes through; nothing yet on how well it fits. */
+export type LeastSquaresLine = Pick<
+  LineFit,
+  'intercept' | 'slope' | 'points' | 'meanX' | 'meanY' | 'spreadX'
+>;
+
+/**
+ * The least-squares line alone, in two passes. `calculation` is named in the errors, which are those of
+ * `fitLine`.
+ */
+export function leastSquaresLine(
+  calculation: string,
+  x: ArrayLike<number>,
+  y: ArrayLike<number>,
+): LeastSquaresLine {
+  requireSameLength(calculation, x, y);
+  const points = x.length;
+  const originX = x[0] ?? 0;
+  const originY = y[0] ?? 0;
+  let sumX = 0;
+  let sumY = 0;
+  for (let index = 0; index < points; index += 1) {
+    sumX += (x[index] as number) - originX;
+    sumY += (y[index] as number) - originY;
+  }
+  if (!Number.isFinite(sumX + sumY)) refuse(calculation, x, y);
+  if (points < 3) throw new TooFewPointsError({ points, needed: 3, allAtOnePlace: false });
+
+  const middleX = sumX / points;
+  const middleY = sumY / points;
+  let spreadX = 0;
+  let spreadXY = 0;
+  for (let index = 0; index < points; index += 1) {
+    const fromMiddle = (x[index] as number) - originX - middleX;
+    spreadX += fromMiddle * fromMiddle;
+    spreadXY += fromMiddle * ((y[index] as number) - originY - middleY);
+  }
+  if (!Number.isFinite(spreadX + spreadXY)) refuse(calculation, x, y);
+  if (spreadX === 0) throw new TooFewPointsError({ points, needed: 3, allAtOnePlace: true });
+  const slope = spreadXY / spreadX;
+  const meanX = originX + middleX;
+  const meanY = originY + middleY;
+  return { intercept: meanY - slope * meanX, slope, points, meanX, meanY, spreadX };
+}
+
+function uncertaintiesOf({ points, meanX, spreadX }: LeastSquaresLine, sumOfSquares: number) {
   const degreesOfFreedom = points - 2;
   const variance = sumOfSquares / degreesOfFreedom;
   const interceptShare = 1 / points + (meanX * meanX) / spreadX;
   return {
-    intercept: meanY - slope * meanX,
-    slope,
     interceptUncertainty: Math.sqrt(variance * interceptShare),
     slopeUncertainty: Math.sqrt(variance / spreadX),
     covariance: (-variance * meanX) / spreadX,
@@ -116,20 +116,11 @@ export function lineFrom(found: {
     residualDeviation: Math.sqrt(variance),
     degreesOfFreedom,
     sumOfSquares,
-    points,
-    meanX,
-    meanY,
-    spreadX,
   };
 }
 
-function sameEverywhere(x: ArrayLike<number>): boolean {
-  for (let index = 1; index < x.length; index += 1) if (x[index] !== x[0]) return false;
-  return true;
-}
-
-function refuse(x: ArrayLike<number>, y: ArrayLike<number>): never {
-  requireFinite('fitLine, x', x);
-  requireFinite('fitLine, y', y);
-  throw new UnfitDataError('fitLine', 'the values are so large that their sums overflow');
+function refuse(calculation: string, x: ArrayLike<number>, y: ArrayLike<number>): never {
+  requireFinite(`${calculation}, x`, x);
+  requireFinite(`${calculation}, y`, y);
+  throw new UnfitDataError(calculation, 'the values are so large that their sums overflow');
 }
