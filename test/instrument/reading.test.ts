@@ -1,0 +1,61 @@
+import { describe, expect, it } from 'vitest';
+import { readFlag, readNumber } from '../../src/instrument/reading.js';
+
+const about = { address: 'tcp://127.0.0.1:5025', question: 'VOL?' };
+
+describe('a number that a driver finds by its pattern', () => {
+  const short = {
+    kind: 'number',
+    ask: ['VOL?'],
+    dimension: 'voltage',
+    pattern: /^(?<value>[+-]?[0-9.]+) ?V$/,
+  } as const;
+  const prefixed = { ...short, pattern: /^VOLT (?<value>\S+)$/ } as const;
+
+  it.each([
+    ['15.21V', short, { kind: 'value', value: 15.21 }],
+    [' 15.21 V ', short, { kind: 'value', value: 15.21 }],
+    ['-0.003V', short, { kind: 'value', value: -0.003 }],
+    ['VOLT 12.031', prefixed, { kind: 'value', value: 12.031 }],
+    ['VOLT 9.91E37', prefixed, { kind: 'not-a-number' }],
+  ] as const)('%s', (reply, reading, measurement) => {
+    expect(readNumber(reply, reading, about)).toEqual(measurement);
+  });
+
+  it.each(['15.21A', '15.21', '1.2.3V', 'V', '15.21V15.21V', `${' '.repeat(2000)}1V`])(
+    'is not in "%s"',
+    (reply) => {
+      expect(() => readNumber(reply, short, about)).toThrow(
+        expect.objectContaining({ code: 'REPLY_NOT_UNDERSTOOD', question: 'VOL?' }) as Error,
+      );
+    },
+  );
+
+  it('is the whole reply where there is no pattern', () => {
+    const plain = { kind: 'number', ask: ['VOL?'], dimension: 'voltage' } as const;
+    expect(readNumber('15.21', plain, about)).toEqual({ kind: 'value', value: 15.21 });
+    expect(() => readNumber('15.21V', plain, about)).toThrow(/a bare number/);
+  });
+});
+
+describe('a yes or no', () => {
+  const reading = { kind: 'flag', ask: ['INP?'], trueWhen: /^(INPUT )?(1|ON)$/ } as const;
+
+  it.each(['1', 'ON', ' ON ', 'INPUT ON'])('is yes by "%s"', (reply) => {
+    expect(readFlag(reply, reading, about)).toBe(true);
+  });
+
+  it.each(['0', '+0', '00', 'OFF', 'off', 'FALSE', 'NO', 'INPUT OFF', 'INP:0', 'input=off'])(
+    'is no by "%s"',
+    (reply) => {
+      expect(readFlag(reply, reading, about)).toBe(false);
+    },
+  );
+
+  it.each(['', '2', 'ERR', '10', '1.0', '3.0', 'KNOFF', '15.1', 'OFF?', '\x00'])(
+    'is neither by "%s"',
+    (reply) => {
+      expect(() => readFlag(reply, reading, about)).toThrow(/0, OFF, FALSE or NO/);
+    },
+  );
+});
