@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto';
 import { open } from 'node:fs/promises';
 import { BadFileError, MissingFileError } from './file-error.js';
+import { largestFile, tooLarge } from './file-size.js';
 
 /** What was read from a user's file: its meaning, and the text and hash that go into the record. */
 export interface FileRead<T> {
@@ -10,9 +11,6 @@ export interface FileRead<T> {
   /** Of the bytes of the file, in hexadecimal. */
   readonly sha256: string;
 }
-
-/** No file of ours needs more; a larger one is refused before it is parsed. */
-export const largestFile = 1024 * 1024;
 
 /**
  * Reads a file whole and gives it to `parse` with its path, by which messages will call it.
@@ -39,7 +37,9 @@ async function readBounded(path: string): Promise<Uint8Array> {
         const { bytesRead, buffer } = await file.read(new Uint8Array(64 * 1024));
         if (bytesRead === 0) break;
         size += bytesRead;
-        if (size > largestFile) throw tooLarge(path);
+        if (size > largestFile) {
+          throw new BadFileError([{ file: path, line: 1, column: 1, path: '', message: tooLarge }]);
+        }
         chunks.push(buffer.subarray(0, bytesRead));
       }
     } finally {
@@ -63,11 +63,6 @@ function decode(bytes: Uint8Array, path: string): string {
       cause: error,
     });
   }
-}
-
-function tooLarge(path: string): BadFileError {
-  const message = `larger than ${largestFile / 1024 / 1024} MiB; is this the right file?`;
-  return new BadFileError([{ file: path, line: 1, column: 1, path: '', message }]);
 }
 
 function asMissing(error: unknown, path: string): unknown {

@@ -1,6 +1,7 @@
 import { isMap, isNode, isScalar, isSeq, LineCounter, parseDocument, type Document, type Pair } from 'yaml';
 import { BadFileError, type FileProblem } from './file-error.js';
-import { limitProblem, nestsTooDeeply } from './yaml-limits.js';
+import { largestFile, tooLarge } from './file-size.js';
+import { limitProblem, nestsTooDeeply, repeatedKeys } from './yaml-limits.js';
 import { syntaxProblem, type TextProblem } from './yaml-syntax.js';
 
 /** Something wrong with what a file says, before its place in the text has been looked up. */
@@ -35,6 +36,7 @@ export function parseYaml(text: string, fileName: string): YamlDocument {
     throw new BadFileError(problems.map(({ offset, message }) => problemAt(offset, '', message)));
   };
 
+  if (source.length > largestFile) return refuse([{ offset: 0, message: tooLarge }]);
   const deep = nestsTooDeeply(source);
   if (deep !== undefined) {
     for (let end = source.indexOf('\n'); end >= 0; end = source.indexOf('\n', end + 1))
@@ -45,15 +47,17 @@ export function parseYaml(text: string, fileName: string): YamlDocument {
     version: '1.2',
     schema: 'core',
     stringKeys: true,
+    // The parser compares each key with all others; ours is looked at once, see `repeatedKeys`.
+    uniqueKeys: false,
     merge: false,
     prettyErrors: false,
     lineCounter: lines,
     logLevel: 'silent',
   });
-  const syntax = syntaxProblem(document, source);
-  if (syntax.length > 0) return refuse(syntax);
-  const limit = limitProblem(document);
-  if (limit !== undefined) return refuse([limit]);
+  const problem = syntaxProblem(document) ?? limitProblem(document);
+  if (problem !== undefined) return refuse([problem]);
+  const repeated = repeatedKeys(document);
+  if (repeated.length > 0) return refuse(repeated);
 
   return {
     fileName,

@@ -1,4 +1,5 @@
-import { isAlias, isCollection, isNode, isPair, isScalar, type Document, type Node } from 'yaml';
+import { isAlias, isCollection, isNode, isPair, isScalar, visit, type Document, type Node } from 'yaml';
+import { shown } from '../quantity/shown-text.js';
 import type { TextProblem } from './yaml-syntax.js';
 
 /** As many values as any file of ours could hold, aliases expanded. */
@@ -63,4 +64,23 @@ export function limitProblem(document: Document): TextProblem | undefined {
   };
   sizeOf(document.contents);
   return problem;
+}
+
+/** Keys that stand twice in one map; each is told at its second place. */
+export function repeatedKeys(document: Document): TextProblem[] {
+  const problems: TextProblem[] = [];
+  visit(document, {
+    Map: (_, map) => {
+      const seen = new Set<unknown>();
+      for (const { key } of map.items) {
+        if (!isScalar(key)) continue;
+        if (seen.has(key.value)) {
+          const message = `the key ${shown(String(key.value))} stands here a second time`;
+          problems.push({ offset: key.range?.[0] ?? 0, message });
+        }
+        seen.add(key.value);
+      }
+    },
+  });
+  return problems;
 }

@@ -8,23 +8,14 @@ export interface TextProblem {
 
 /**
  * What the parser has to say, in our words where the matter is common. A syntax error tends to draw
- * others after it, so the first one is told alone; keys that stand twice are all told.
+ * others after it, so the first one is told alone.
  */
-export function syntaxProblem(document: Document, source: string): TextProblem[] {
-  const problems: TextProblem[] = [];
-  for (const error of [...document.errors, ...document.warnings]) {
-    const [offset] = error.pos;
-    if (error.code === 'DUPLICATE_KEY') {
-      const key = /^[^\s:,{}[\]]+/.exec(source.slice(offset, offset + 100))?.[0] ?? '';
-      problems.push({ offset, message: `the key '${key}' stands here a second time` });
-      continue;
-    }
-    problems.push({ offset, message: plainWords(error.code, error.message) });
-    return problems;
-  }
+export function syntaxProblem(document: Document): TextProblem | undefined {
+  const [error] = [...document.errors, ...document.warnings];
+  if (error !== undefined) return { offset: error.pos[0], message: plainWords(error.code, error.message) };
   const version = document.directives?.yaml.explicit === true ? document.directives.yaml.version : '1.2';
-  if (version !== '1.2') problems.push({ offset: 0, message: `YAML ${version} is not read, only YAML 1.2` });
-  return problems;
+  if (version !== '1.2') return { offset: 0, message: `YAML ${version} is not read, only YAML 1.2` };
+  return undefined;
 }
 
 function plainWords(code: string, message: string): string {
