@@ -4,10 +4,10 @@
  */
 export interface Random {
   /** Evenly within [low, high). */
-  uniform(low: number, high: number): number;
+  readonly uniform: (low: number, high: number) => number;
   /** Normally distributed with mean 0 and standard deviation 1. */
-  normal(): number;
-  fork(name: string): Random;
+  readonly normal: () => number;
+  readonly fork: (name: string) => Random;
 }
 
 /**

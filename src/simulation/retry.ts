@@ -9,20 +9,22 @@ export const ATTEMPT_SHARE: Ratio = 0.15;
 /** How often a constant-power module tries to start after its under-voltage shutdown. */
 export const SHUTDOWN_PERIOD: Seconds = 0.6;
 
+/** Sums of periods are rounded; this much of a period is none. */
+const ROUNDING = 1e-9;
+
 /** Whether a module that first tripped at `since` is just trying. The trip itself is its first attempt. */
 export function attempting(since: Seconds, period: Seconds, at: Seconds): boolean {
-  return phaseOf(since, period, at) < ATTEMPT_SHARE * period;
-}
-
-/** The first moment from `at` on at which the module is trying: now, or the beginning of the next period. */
-export function nextAttempt(since: Seconds, period: Seconds, at: Seconds): Seconds {
-  if (attempting(since, period, at)) return at;
-  return since + (Math.floor((at - since) / period) + 1) * period;
-}
-
-function phaseOf(since: Seconds, period: Seconds, at: Seconds): Seconds {
   const periods = (at - since) / period;
-  // A moment computed as the beginning of a period may be rounded to just before it.
-  const whole = Math.floor(periods + 1e-9);
-  return Math.max(0, periods - whole) * period;
+  return periods - Math.floor(periods + ROUNDING) < ATTEMPT_SHARE;
+}
+
+/** Whether a new attempt begins at this very moment. */
+export function attemptBegins(since: Seconds, period: Seconds, at: Seconds): boolean {
+  const periods = (at - since) / period;
+  return periods > 0.5 && Math.abs(periods - Math.round(periods)) < ROUNDING;
+}
+
+/** The first moment after `at` at which a new attempt begins. */
+export function nextAttempt(since: Seconds, period: Seconds, at: Seconds): Seconds {
+  return since + (Math.floor((at - since) / period + ROUNDING) + 1) * period;
 }

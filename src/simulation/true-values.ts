@@ -16,7 +16,7 @@ export interface TrueValues {
   readonly shortCircuitCurrent: Amperes | undefined;
   readonly limitStyle: SimulatedModule['limit']['style'];
   /** The smallest current at which the voltage has sagged by the share of the open-circuit voltage. */
-  dropoutCurrent(sag: Ratio): Amperes;
+  readonly dropoutCurrent: (sag: Ratio) => Amperes;
 }
 
 /** The truth about a simulated module, at a rise of its temperature above ambient (cold when left out). */

@@ -4,7 +4,7 @@ import { operatingPoints } from '../circuit/operating-point.js';
 import type { SimulatedModule } from '../files/simulation-section.js';
 import type { Kelvins, Seconds, Volts } from '../quantity/quantity.js';
 import { curveOf, leastHeldVoltage, startingCurveOf } from './module-curve-of.js';
-import { ATTEMPT_SHARE, SHUTDOWN_PERIOD, attempting, nextAttempt } from './retry.js';
+import { ATTEMPT_SHARE, SHUTDOWN_PERIOD, attemptBegins, attempting, nextAttempt } from './retry.js';
 import { riseAfter, steadyRise } from './warming.js';
 
 /** A module at one moment. Plain and never changed: time and acts make a new one of it. */
@@ -60,7 +60,7 @@ export function onNewLoad(
   before: LoadLaw,
   after: LoadLaw,
 ): ModuleState {
-  return settle(module, state, after, outputOf(module, state, before).voltage);
+  return settle(module, state, after, outputOf(module, state, before).voltage, attempting);
 }
 
 /**
@@ -76,7 +76,8 @@ export function advance(
 ): ModuleState {
   let now = state;
   while (now.at < until) {
-    now = settle(module, stretch(module, now, law, until), law, outputOf(module, now, law).voltage);
+    const { voltage } = outputOf(module, now, law);
+    now = settle(module, stretch(module, now, law, until), law, voltage, attemptBegins);
   }
   return now;
 }
@@ -106,8 +107,18 @@ export function outputOf(module: SimulatedModule, state: ModuleState, law: LoadL
   }
 }
 
-/** Applies at once what follows from the present load and temperature; `from` is the voltage it had. */
-function settle(module: SimulatedModule, state: ModuleState, law: LoadLaw, from: Volts): ModuleState {
+/**
+ * Applies at once what follows from the present load and temperature; `from` is the voltage it had.
+ * A module that retries starts whenever it tries once its load has eased, but having merely cooled by a hair
+ * only with a new attempt: else it would start and trip without end within one.
+ */
+function settle(
+  module: SimulatedModule,
+  state: ModuleState,
+  law: LoadLaw,
+  from: Volts,
+  mayStart: (since: Seconds, period: Seconds, at: Seconds) => boolean,
+): ModuleState {
   const { phase, at, rise } = state;
   switch (phase.kind) {
     case 'off':
@@ -118,7 +129,7 @@ function settle(module: SimulatedModule, state: ModuleState, law: LoadLaw, from:
     case 'limiting':
       return mustDeliver(module, rise, law) ? { ...state, phase: { kind: 'held', since: at, from } } : state;
     case 'retrying':
-      return heldPoint(module, rise, law) !== undefined && attempting(phase.since, periodOf(module), at)
+      return heldPoint(module, rise, law) !== undefined && mayStart(phase.since, periodOf(module), at)
         ? { ...state, phase: { kind: 'held', since: at, from } }
         : state;
   }
@@ -136,8 +147,8 @@ function stretch(module: SimulatedModule, state: ModuleState, law: LoadLaw, unti
   const end = currentIsSteady(module, state, risen(goal), law)
     ? goal
     : Math.min(goal, state.at + step(module));
-  const holds = (at: Seconds): boolean =>
-    couldDeliver(module, state, risen(at), law) === couldDeliver(module, state, state.rise, law);
+  const could = couldDeliver(module, state, state.rise, law);
+  const holds = (at: Seconds): boolean => couldDeliver(module, state, risen(at), law) === could;
   const turn = holds(end) ? end : firstFailing(holds, state.at, end);
   return { at: turn, rise: risen(turn), phase };
 }

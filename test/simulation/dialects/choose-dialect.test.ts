@@ -1,0 +1,56 @@
+import { describe, expect, it } from 'vitest';
+import { dialectFor } from '../../../src/simulation/dialects/choose-dialect.js';
+import {
+  NotUnderstoodBySimulationError,
+  UnknownDialectError,
+} from '../../../src/simulation/simulation-errors.js';
+import { loadDriver, meterDriver } from '../bench-parts.js';
+
+const thrownBy = (act: () => unknown): unknown => {
+  try {
+    act();
+  } catch (error) {
+    return error;
+  }
+  return undefined;
+};
+
+describe('the dialect for a driver', () => {
+  it('is one that understands all its messages', () => {
+    expect(dialectFor(loadDriver).name).toBe('standard-load');
+    expect(dialectFor(meterDriver).name).toBe('configured-meter');
+    const byQuery = {
+      ...meterDriver,
+      prepare: [],
+      readings: { voltage: { kind: 'number', ask: ['MEAS:VOLT:DC?'], dimension: 'voltage' } },
+    } as const;
+    expect(dialectFor(byQuery).name).toBe('query-meter');
+  });
+
+  it('is the one that is named', () => {
+    expect(dialectFor(meterDriver, 'query-meter').name).toBe('query-meter');
+    const unknown = thrownBy(() => dialectFor(meterDriver, 'standard-load'));
+    expect(unknown).toBeInstanceOf(UnknownDialectError);
+    expect((unknown as Error).message).toBe(
+      'there is no simulated meter that speaks "standard-load"; there are configured-meter, query-meter',
+    );
+  });
+
+  it('is refused with the message that none understands', () => {
+    const strange = {
+      ...loadDriver,
+      operations: { ...loadDriver.operations, 'set-current': ['LOADCURRENT {amps}'] },
+    };
+    const error = thrownBy(() => dialectFor(strange));
+    expect(error).toBeInstanceOf(NotUnderstoodBySimulationError);
+    expect(error).toMatchObject({ unknownMessage: 'LOADCURRENT 1', driver: 'load-input-scpi', exitCode: 65 });
+  });
+
+  it('is refused for a question that would never be answered', () => {
+    const mute = {
+      ...meterDriver,
+      readings: { voltage: { kind: 'number', ask: ['CONF:VOLT:DC'], dimension: 'voltage' } },
+    } as const;
+    expect(thrownBy(() => dialectFor(mute))).toMatchObject({ unknownMessage: 'CONF:VOLT:DC' });
+  });
+});
