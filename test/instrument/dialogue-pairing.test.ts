@@ -142,6 +142,18 @@ describe('the dialogue', () => {
     expect(clock.now() - silentUntil).toBeGreaterThanOrEqual(timeout);
   });
 
+  it('passes over an identity that was still due when another question is asked', async () => {
+    let asked = 0;
+    const { dialogue } = inVirtualTime((message, at) => {
+      const lost = message === '*IDN?' && ++asked === 2;
+      const late = message === 'Q2?' ? 'NURSERY,LOAD\n' : '';
+      return lost ? [] : [{ at, bytes: Buffer.from(`${late}${answerTo(message)}\n`) }];
+    });
+    await dialogue.ask('*IDN?');
+    await expect(dialogue.ask('*IDN?')).rejects.toMatchObject({ code: 'INSTRUMENT_SILENT' });
+    expect(await dialogue.ask('Q2?')).toBe('answer to Q2?');
+  });
+
   it('reads a block of bytes, whatever is in it, and the line after it', async () => {
     const bytes = Buffer.from('#19\n\r\n#\x00\xff234\n', 'latin1');
     const { dialogue } = inVirtualTime((message, at) => [
