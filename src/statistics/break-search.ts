@@ -36,8 +36,8 @@ interface Part {
  *
  * Exact and linear: running sums give every gap in constant time. Most gaps need no look: leaving points
  * out never makes a sum of squares larger, so the parts beside a stretch of about √n points bound all the
- * splits in it. Where there is no break at all nothing is ruled out, and the search takes about three
- * times as long.
+ * splits in it. Where there is no break at all nothing is ruled out, and the whole fit takes about
+ * twice as long.
  */
 export function bestSplit(
   points: LevelledPoints,

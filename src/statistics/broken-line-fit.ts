@@ -52,7 +52,8 @@ export interface BrokenLineFit {
  *
  * Each piece holds at least two different x, so the break lies from the second different x to the last
  * but one, and at least five points at four different x are needed. `undefined` when there are fewer,
- * or when there is no break to be found: the points lie on one line as exactly as the numbers can say.
+ * or when there is no break to be found: the points lie on one line as exactly as the numbers can say, or
+ * no break brings the line closer to them.
  * @throws UnfitDataError for values that are not finite, or x and y of different length.
  * @example fitBrokenLine([0, 1, 2, 3, 4, 5], [0, 0, 0, 1, 2, 3])?.breakpoint; // => 2
  */

@@ -17,7 +17,7 @@ export function leastByGrid(points: readonly Point[]): number {
  */
 export function leastByGaps(
   points: readonly Point[],
-): { sumOfSquares: number; straight: boolean } | undefined {
+): { sumOfSquares: number; sumOfSquaresOfLine: number } | undefined {
   const places = different(points);
   if (points.length < 5 || places.length < 4) return undefined;
   let least = Infinity;
@@ -30,7 +30,7 @@ export function leastByGaps(
     if (crossing > before && crossing < after)
       least = Math.min(least, left.sumOfSquares + right.sumOfSquares);
   }
-  return { sumOfSquares: least, straight: line(points).sumOfSquares < 1e-9 };
+  return { sumOfSquares: least, sumOfSquaresOfLine: line(points).sumOfSquares };
 }
 
 function different(points: readonly Point[]): number[] {
