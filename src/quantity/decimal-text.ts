@@ -7,7 +7,7 @@
  */
 export function shiftedText(value: number, places: number, significant?: number): string {
   const [mantissa = '0', exponentText = '0'] = exponentialText(value, significant);
-  const exponent = Number(exponentText) + places;
+  const exponent = value === 0 ? 0 : Number(exponentText) + places;
   const sign = mantissa.startsWith('-') ? '-' : '';
   const digits = mantissa.replace('-', '').replace('.', '');
   if (exponent < -7 || exponent > 20) return `${mantissa}e${exponent}`;

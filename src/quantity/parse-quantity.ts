@@ -21,7 +21,7 @@ export const longestQuantity = 64;
 // `2.5`, `-3`, `1e-3`, `.5`; as text, since it becomes part of longer patterns.
 const numberPattern = String.raw`[+-]?(?:\d+(?:\.\d+)?|\.\d+)(?:[eE][+-]?\d{1,3})?`;
 
-const numberAndUnit = new RegExp(`^(${numberPattern})(?: ?(\\S.*))?$`, 's');
+const numberAndUnit = new RegExp(`^(${numberPattern})(?: ?([\\p{L}%°].*))?$`, 'su');
 const share = new RegExp(`^(${numberPattern}) ?%(?: of (.*))?$`, 's');
 
 /**
