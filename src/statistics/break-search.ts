@@ -32,7 +32,7 @@ interface Part {
  * sum of squares is the least that any break in the gap can reach, and it is reached when the two lines
  * cross in the gap. Otherwise it is Q(ψ) = Q_apart + g(ψ)²/v(ψ), g being the step between the two lines at ψ
  * and v its variance for unit scatter; that has no minimum but at the crossing, so the best break lies at
- * one end of the gap. (The two cases are in D. J. Hudson, J. Amer. Statist. Assoc. 61 (1966) 1097–1129.)
+ * one end of the gap. (The two cases are in D. J. Hudson, J. Amer. Statist. Assoc. 61 (1966); from memory.)
  *
  * Exact and linear: running sums give every gap in constant time. Most gaps need no look: leaving points
  * out never makes a sum of squares larger, so the parts beside a stretch of about √n points bound all the

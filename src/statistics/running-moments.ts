@@ -3,7 +3,7 @@ import { UnfitDataError } from './unfit-data-error.js';
 /**
  * Mean, scatter and extremes of values that come one at a time and are not kept: memory does not grow
  * with their number. Welford's updating formulas, so that a small scatter on a large mean is not lost
- * (B. P. Welford, Technometrics 4 (1962) 419–420).
+ * (B. P. Welford, Technometrics 4 (1962); from memory).
  * @example
  * const moments = new RunningMoments();
  * for (const volts of [15.21, 15.19, 15.20]) moments.add(volts);

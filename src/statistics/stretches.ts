@@ -32,7 +32,7 @@ export interface Stretches {
 /**
  * Moments on both sides of each border, in one pass over the points. Those of each stretch are taken
  * about its own means and put together from both ends by the formulas of T. F. Chan, G. H. Golub and
- * R. J. LeVeque (The American Statistician 37 (1983) 242–247), so that no digits are lost.
+ * R. J. LeVeque (The American Statistician 37 (1983); from memory), so that no digits are lost.
  * Memory grows with the number of borders only. Every stretch must hold a point.
  */
 export function cutInStretches(points: LevelledPoints, borders: Int32Array): Stretches {

@@ -11,7 +11,7 @@ const nearlyNormal = 1e5;
  * Probability that a value of Student's t distribution is at most `t`. `degreesOfFreedom` is positive,
  * need not be whole, and may be Infinity (the normal distribution). Relative error below 1e-12 in the
  * lower tail. Source: Abramowitz & Stegun 26.7.1 with 26.5.27; above 100 000 degrees of freedom
- * G. W. Hill's transformation (Communications of the ACM 13 (1970), Algorithm 395).
+ * G. W. Hill's transformation (Communications of the ACM 13 (1970), Algorithm 395; from memory, checked with mpmath).
  * @throws UnfitDataError for NaN or degrees of freedom that are not positive.
  * @example studentTDistribution(1, 1); // => 0.75
  */
