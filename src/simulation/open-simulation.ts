@@ -56,9 +56,9 @@ export function openSimulation(facts: {
         advice: 'Only a load and a meter can be simulated.',
       });
     }
-    const dialect = dialectFor(driver, dialectName);
     const known = instruments.get(role);
     if (known !== undefined) return known;
+    const dialect = dialectFor(driver, dialectName);
     const made = new VirtualInstrument({ bench: world, simulation, driver, dialect, random });
     instruments.set(role, made);
     return made;
@@ -68,13 +68,15 @@ export function openSimulation(facts: {
     began,
     operator: simulatedOperator({ bench: world, clock, began }, simulation.answers),
     instrument,
-    connect: (role, driver, dialectName) =>
-      new SimulatedConnection({
-        address: `simulated:${dialectFor(driver, dialectName).name}`,
-        instrument: instrument(role, driver, dialectName),
+    connect: (role, driver, dialectName) => {
+      const reached = instrument(role, driver, dialectName);
+      return new SimulatedConnection({
+        address: `simulated:${reached.dialect}`,
+        instrument: reached,
         clock,
         began,
-      }),
+      });
+    },
   };
 }
 

@@ -42,6 +42,8 @@ type Quantity = 'voltage' | 'current' | 'power';
 /** One instrument: a way of speaking, its own errors, the time it takes, and faults. */
 export class VirtualInstrument {
   readonly role: Dialect['role'];
+  /** The name of its way of speaking. */
+  readonly dialect: string;
   readonly lostFrom: Seconds;
   readonly #silentFrom: Seconds;
   readonly #bench: VirtualBench;
@@ -62,6 +64,7 @@ export class VirtualInstrument {
 
   constructor({ bench, simulation, driver, dialect, random }: InstrumentFacts) {
     this.role = dialect.role;
+    this.dialect = dialect.name;
     this.lostFrom = faultTime(simulation, `${dialect.role}-lost`);
     this.#silentFrom = faultTime(simulation, `${dialect.role}-silent`);
     this.#bench = bench;

@@ -93,9 +93,9 @@ export interface WiredBench extends OpenedSimulation {
   readonly load: Connection;
   readonly meter: Connection;
   /** Sends a message to the load and lets 100 ms pass, so that all has settled. */
-  tell(message: string): Promise<void>;
-  readVoltage(): Promise<number>;
-  readCurrent(): Promise<number>;
+  readonly tell: (message: string) => Promise<void>;
+  readonly readVoltage: () => Promise<number>;
+  readonly readCurrent: () => Promise<number>;
 }
 
 /** A bench met by bytes only, as everything above it will. */

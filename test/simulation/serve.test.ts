@@ -1,0 +1,211 @@
+import { spawnSync } from 'node:child_process';
+import { once } from 'node:events';
+import { existsSync } from 'node:fs';
+import { createServer, connect, type AddressInfo, type Socket } from 'node:net';
+import { SerialPort } from 'serialport';
+import { afterEach, describe, expect, it } from 'vitest';
+import { realClock } from '../../src/clock/real-clock.js';
+import type { Bench } from '../../src/files/bench.js';
+import type { Simulation } from '../../src/files/simulation-section.js';
+import { type ServedBench, type ServeOptions, serveBench } from '../../src/simulation/serve.js';
+import { CannotServeError, CannotSimulateError } from '../../src/simulation/simulation-errors.js';
+import { hiccup, k1, loadDriver, meterDriver, simulationOf } from './bench-parts.js';
+
+const socatIsMissing = spawnSync('socat', ['-V']).error !== undefined;
+
+function benchOf(simulation?: Simulation): Bench {
+  return {
+    name: 'test bench',
+    instruments: {
+      load: { driver: 'load-input-scpi', connection: { kind: 'simulated' } },
+      meter: { driver: 'meter-read-scpi', connection: { kind: 'simulated' } },
+    },
+    leads: { resistance: 0.035, uncertainty: 0.005 },
+    voltageFrom: 'meter-at-module',
+    limits: { voltage: 60, current: 8, power: 150 },
+    ...(simulation === undefined ? {} : { simulation }),
+  };
+}
+
+let served: ServedBench | undefined;
+afterEach(async () => {
+  await served?.close();
+  served = undefined;
+});
+
+async function serve(
+  options: Partial<ServeOptions> = {},
+  simulation = simulationOf(k1(hiccup)),
+): Promise<ServedBench> {
+  const drivers = { load: loadDriver, meter: meterDriver };
+  served = await serveBench({ bench: benchOf(simulation), drivers, clock: realClock, ...options });
+  return served;
+}
+
+const portIn = (address: string | undefined): number => Number(/:(\d+)$/.exec(address ?? '')?.[1]);
+
+async function dial(address: string | undefined): Promise<Socket> {
+  const socket = connect({ host: '127.0.0.1', port: portIn(address) });
+  await once(socket, 'connect');
+  return socket;
+}
+
+async function line(socket: Socket | SerialPort): Promise<string> {
+  let text = '';
+  while (!text.includes('\n')) {
+    const [bytes] = (await once(socket, 'data')) as [Buffer];
+    text += bytes.toString();
+  }
+  return text.trim();
+}
+
+async function ask(socket: Socket | SerialPort, message: string): Promise<string> {
+  const answer = line(socket);
+  socket.write(`${message}\n`);
+  return answer;
+}
+
+describe('a bench served on TCP', () => {
+  it('shows the module through plain sockets, in real time', async () => {
+    const { addresses } = await serve();
+    expect(addresses.load).toMatch(/^tcp:\/\/127\.0\.0\.1:\d+$/);
+    const load = await dial(addresses.load);
+    const meter = await dial(addresses.meter);
+    expect(await ask(load, '*IDN?')).toBe('railproof,simulated load,K-bench,1');
+    load.write('CURR 4;INP ON\r\n');
+    expect(await ask(load, '*OPC?')).toBe('1');
+    const before = performance.now();
+    expect(Number(await ask(meter, 'READ?'))).toBeCloseTo(15.21 - 0.072, 4);
+    // A reading takes the meter 20 ms; timers may fire a little early.
+    expect(performance.now() - before).toBeGreaterThan(19);
+    load.destroy();
+    meter.destroy();
+  });
+
+  it('serves several clients of one instrument', async () => {
+    const { addresses } = await serve();
+    const [one, other] = await Promise.all([dial(addresses.load), dial(addresses.load)]);
+    one.write('CURR 2\n');
+    expect(await ask(one, '*OPC?')).toBe('1');
+    expect(await ask(other, 'CURR?')).toBe('+2.000000E+00');
+    one.destroy();
+    other.destroy();
+  });
+
+  it('answers a client that has already said its last word', async () => {
+    const { addresses } = await serve();
+    const socket = await dial(addresses.meter);
+    const answer = line(socket);
+    socket.end('READ?\n');
+    expect(Number(await answer)).toBeCloseTo(15.21, 4);
+    if (!socket.closed) await once(socket, 'close');
+  });
+
+  it('survives a client that sends megabytes without an end, and one that never reads', async () => {
+    const { addresses } = await serve();
+    const flooding = await dial(addresses.load);
+    const chunk = Buffer.alloc(1 << 20, 0x41);
+    const before = process.memoryUsage().rss;
+    for (let count = 0; count < 24; count++) if (!flooding.write(chunk)) await once(flooding, 'drain');
+    expect(process.memoryUsage().rss - before).toBeLessThan(64 << 20);
+    expect(await ask(flooding, '\nSYST:ERR?')).toBe('-363,"Input buffer overrun"');
+    const deaf = await dial(addresses.load);
+    deaf.pause();
+    deaf.write('*IDN?\n'.repeat(20_000));
+    await realClock.sleep(0.05);
+    deaf.resetAndDestroy();
+    flooding.destroy();
+    const next = await dial(addresses.load);
+    expect(await ask(next, '*OPC?')).toBe('1');
+    next.destroy();
+  });
+
+  it('hangs up when the instrument is lost, and is closed all the same', async () => {
+    const { addresses } = await serve(
+      {},
+      simulationOf(k1(hiccup), { faults: [{ at: 0.15, what: 'meter-lost' }] }),
+    );
+    const meter = await dial(addresses.meter);
+    expect(await ask(meter, '*OPC?')).toBe('1');
+    await once(meter, 'close');
+    await expect(dial(addresses.meter)).rejects.toThrow('ECONNREFUSED');
+    expect(await ask(await dial(addresses.load), '*OPC?')).toBe('1');
+  });
+
+  it('says so when a port is in use, and leaves nothing open', async () => {
+    const other = createServer().listen(0, '127.0.0.1');
+    await once(other, 'listening');
+    const { port } = other.address() as AddressInfo;
+    const refused = await serve({ ports: { meter: port } }).catch((error: unknown) => error);
+    other.close();
+    expect(refused).toBeInstanceOf(CannotServeError);
+    expect(refused).toMatchObject({
+      message: `cannot serve at tcp://127.0.0.1:${port}: the port is in use`,
+      exitCode: 74,
+    });
+  });
+
+  it('frees its ports when it is closed, twice without harm', async () => {
+    const bench = await serve();
+    const { addresses } = bench;
+    const client = await dial(addresses.load);
+    client.on('error', () => undefined);
+    await bench.close();
+    await bench.close();
+    await expect(dial(addresses.load)).rejects.toThrow('ECONNREFUSED');
+  });
+
+  it('needs a simulation section', async () => {
+    await expect(serve({ bench: benchOf() })).rejects.toThrow(CannotSimulateError);
+  });
+});
+
+describe.skipIf(socatIsMissing && process.env['CI'] === undefined)('a bench served on ptys', () => {
+  const open = async (address: string | undefined): Promise<SerialPort> => {
+    const [, path = ''] = /^serial:(.*)\?baud=115200$/.exec(address ?? '') ?? [];
+    const port = new SerialPort({ path, baudRate: 115200, autoOpen: false });
+    await new Promise<void>((resolve, reject) => {
+      port.open((error) => {
+        if (error === null) resolve();
+        else reject(error);
+      });
+    });
+    return port;
+  };
+  const shut = (port: SerialPort): Promise<void> =>
+    new Promise((resolve) => {
+      port.close(() => {
+        resolve();
+      });
+    });
+
+  it('is opened as serial ports, one client after the other, and leaves nothing behind', async () => {
+    const bench = await serve({ lines: 'pty' });
+    const { addresses } = bench;
+    const load = await open(addresses.load);
+    expect(await ask(load, '*IDN?')).toBe('railproof,simulated load,K-bench,1');
+    load.write('CURR 4;INP ON\n');
+    expect(await ask(load, 'INP?')).toBe('1');
+    await shut(load);
+    const again = await open(addresses.load);
+    expect(await ask(again, 'CURR?')).toBe('+4.000000E+00');
+    await shut(again);
+    const meter = await open(addresses.meter);
+    expect(Number(await ask(meter, 'READ?'))).toBeCloseTo(15.21 - 0.072, 4);
+    await shut(meter);
+    await bench.close();
+    expect(existsSync(/^serial:(.*)\?/.exec(addresses.load ?? '')?.[1] ?? '/')).toBe(false);
+  });
+});
+
+describe('without socat', () => {
+  it('ptys are refused with advice, and nothing stays open', async () => {
+    const path = process.env['PATH'];
+    process.env['PATH'] = '/nonexistent';
+    const refused = await serve({ lines: 'pty' }).catch((error: unknown) => error);
+    process.env['PATH'] = path;
+    expect(refused).toBeInstanceOf(CannotServeError);
+    expect(refused).toMatchObject({ reason: 'socat is not installed' });
+    expect((refused as CannotServeError).advice).toContain('apt install socat');
+  });
+});
