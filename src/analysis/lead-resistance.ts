@@ -1,10 +1,8 @@
-import { fitLine } from '../statistics/line-fit.js';
 import type { Evidence, PointEvidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
+import { lineOverCurrent } from './line-over-current.js';
 import { promised, promisedErrors } from './promised-errors.js';
 import { stepsOf } from './curve.js';
-
-const fewestPoints = 4;
 
 /**
  * `lead-resistance`: the slope of (voltage at the module − voltage at the load) over the current, so that
@@ -15,11 +13,12 @@ export function leadFindings(evidence: Evidence): readonly Finding[] {
   const step = stepsOf(evidence, 'load-ramp').at(0);
   if (header.bench.voltageFrom !== 'meter-at-module' || step === undefined) return [];
   const points = step.points.filter(isWhole);
-  if (points.length < fewestPoints) return [];
-  const fit = fitLine(
-    points.map((point) => point.current.mean),
+  const currents = points.map((point) => point.current.mean);
+  const fit = lineOverCurrent(
+    currents,
     points.map((point) => point.moduleVoltage.mean - point.loadVoltage.mean),
   );
+  if (fit === undefined) return [];
   const meter = promisedErrors(header, 'meter', 'voltage');
   const load = promisedErrors(header, 'load', 'voltage');
   const current = promisedErrors(header, 'load', 'current');

@@ -1,11 +1,11 @@
 import type { Amperes } from '../quantity/quantity.js';
-import { fitLine, type LineFit } from '../statistics/line-fit.js';
+import type { LineFit } from '../statistics/line-fit.js';
 import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
+import { lineOverCurrent } from './line-over-current.js';
 import { moduleVoltageErrors, promised, promisedErrors } from './promised-errors.js';
 
-const fewestPoints = 4;
 /** The line may be stretched by this part beyond its last point to reach the rated current. */
 const stretch = 1.05;
 
@@ -21,11 +21,11 @@ export function regulationFindings(
   points: readonly CurvePoint[],
   openCircuitKnown: boolean,
 ): readonly Finding[] {
-  if (points.length < fewestPoints) return [];
-  const fit = fitLine(
+  const fit = lineOverCurrent(
     points.map((point) => point.current),
     points.map((point) => point.voltage),
   );
+  if (fit === undefined) return [];
   const step = points[0]?.step ?? null;
   const droop = droopFinding(evidence, fit, step);
   const reaches = (points.at(-1)?.current ?? 0) * stretch;
