@@ -6,7 +6,8 @@ import { stepsOf } from './curve.js';
 
 /**
  * `lead-resistance`: the slope of (voltage at the module − voltage at the load) over the current, so that
- * the offset between the two instruments falls out. Only where a meter sits at the module.
+ * the offset between the two instruments falls out. Only where a meter sits at the module. A gain error
+ * scales what its own instrument read: the meter's the droop of the module, the load's that and the leads.
  */
 export function leadFindings(evidence: Evidence): readonly Finding[] {
   const { header } = evidence;
@@ -18,7 +19,11 @@ export function leadFindings(evidence: Evidence): readonly Finding[] {
     currents,
     points.map((point) => point.moduleVoltage.mean - point.loadVoltage.mean),
   );
-  if (fit === undefined) return [];
+  const atModule = lineOverCurrent(
+    currents,
+    points.map((point) => point.moduleVoltage.mean),
+  );
+  if (fit === undefined || atModule === undefined) return [];
   const meter = promisedErrors(header, 'meter', 'voltage');
   const load = promisedErrors(header, 'load', 'voltage');
   const current = promisedErrors(header, 'load', 'current');
@@ -35,8 +40,8 @@ export function leadFindings(evidence: Evidence): readonly Finding[] {
         uncertainty: Math.max(fit.residualDeviation, resolution) / Math.sqrt(fit.spreadX),
         degreesOfFreedom: fit.degreesOfFreedom,
       },
-      promised(`${load.of}, gain`, load.gain * fit.slope),
-      promised(`${meter.of}, gain`, meter.gain * fit.slope),
+      promised(`${load.of}, gain`, load.gain * (atModule.slope - fit.slope)),
+      promised(`${meter.of}, gain`, meter.gain * atModule.slope),
       promised(`${current.of}, gain`, current.gain * fit.slope),
     ],
     { step: step.step },

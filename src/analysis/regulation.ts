@@ -12,8 +12,9 @@ const stretch = 1.05;
 /**
  * `droop-resistance`, `load-regulation` and, where no open-circuit step was made, `open-circuit-voltage`:
  * a straight line V = V0 − R·I through the regulated points, with the residuals' uncertainties
- * (JCGM 100:2008, H.3) and the instruments' promises. A gain error scales the slope, whether it is the
- * voltage's or the current's; an offset leaves it alone; both move V0.
+ * (JCGM 100:2008, H.3) and the instruments' promises. A gain error scales the slope that was read, whether
+ * it is the voltage's or the current's; an offset leaves it alone; both move V0. Where the voltage is read
+ * at the load, the slope that was read is that of the module and the leads together.
  * @param points held, steady, below the onset of the limit; by rising current.
  */
 export function regulationFindings(
@@ -40,6 +41,7 @@ function droopFinding(evidence: Evidence, fit: LineFit, step: number | null): Fi
   const { instrument: voltage, leads } = moduleVoltageErrors(evidence.header);
   const current = promisedErrors(evidence.header, 'load', 'current');
   const droop = -fit.slope;
+  const slopeRead = readSlope(evidence, fit);
   return measured(
     'droop-resistance',
     'resistance',
@@ -51,8 +53,8 @@ function droopFinding(evidence: Evidence, fit: LineFit, step: number | null): Fi
         uncertainty: scatter(fit, voltage.resolution) / Math.sqrt(fit.spreadX),
         degreesOfFreedom: fit.degreesOfFreedom,
       },
-      promised(`${voltage.of}, gain`, voltage.gain * droop),
-      promised(`${current.of}, gain`, current.gain * droop),
+      promised(`${voltage.of}, gain`, voltage.gain * slopeRead),
+      promised(`${current.of}, gain`, current.gain * slopeRead),
       ...(leads === 0 ? [] : [promised('resistance of the leads', leads)]),
     ],
     { step, note: `straight line through ${fit.points} points` },
@@ -76,7 +78,7 @@ function interceptFinding(evidence: Evidence, fit: LineFit, step: number | null)
       },
       promised(`${voltage.of}, gain`, voltage.gain * fit.intercept),
       promised(`${voltage.of}, offset`, voltage.offset),
-      promised(`${current.of}, offset`, current.offset * fit.slope),
+      promised(`${current.of}, offset`, current.offset * readSlope(evidence, fit)),
     ],
     { step, note: 'by extending the line to no load' },
   );
@@ -96,6 +98,11 @@ function regulationFinding(evidence: Evidence, droop: Finding, reaches: Amperes)
       { step: droop.step, note: 'from no load to rated current, of the rated voltage' },
     ),
   ];
+}
+
+/** Of the voltage as the instrument read it, before what the leads lose was added by calculation; in Ω. */
+function readSlope({ header: { bench } }: Evidence, fit: LineFit): number {
+  return bench.voltageFrom === 'load-terminals' ? fit.slope - bench.leads.resistance : fit.slope;
 }
 
 /** Residuals smaller than the last digit say nothing about what the last digit hides. */
