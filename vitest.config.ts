@@ -3,6 +3,7 @@ import { defineConfig } from 'vitest/config';
 export default defineConfig({
   test: {
     include: ['test/**/*.test.ts'],
+    globalSetup: ['test/build-first.ts'],
     pool: 'forks',
     restoreMocks: true,
     unstubEnvs: true,

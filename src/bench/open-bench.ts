@@ -1,13 +1,11 @@
 import type { Clock } from '../clock/clock.js';
-import type { Bench, ConnectionAddress } from '../files/bench.js';
+import type { Bench } from '../files/bench.js';
 import type { Driver, Role } from '../files/driver.js';
-import type { Connection } from '../instrument/connection.js';
+import type { Connect } from '../instrument/connect.js';
 import { Instrument } from '../instrument/instrument.js';
 import { type Ceilings, ceilingsOf } from './ceilings.js';
 import { type InputListener, Load } from './load.js';
 import type { Taken } from './sample.js';
-
-export type Connect = (address: ConnectionAddress, driver: Driver, role: Role) => Promise<Connection>;
 
 export interface BenchParts {
   readonly bench: Bench;

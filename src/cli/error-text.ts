@@ -12,7 +12,8 @@ export function errorText(error: unknown): string {
   const message = printable(error.message);
   if (error.advice === undefined) return message;
   const advice = printable(sentence(error.advice));
-  return message.includes('\n') ? `${message}\n${advice}` : `${message}. ${advice}`.replace('..', '.');
+  if (message.includes('\n')) return `${message}\n${advice}`;
+  return /[.!?]$/.test(message) ? `${message} ${advice}` : `${message}. ${advice}`;
 }
 
 function sentence(text: string): string {

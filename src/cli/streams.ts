@@ -6,6 +6,8 @@ export interface Streams {
   readonly environment: NodeJS.ProcessEnv;
 }
 
+/** A reader that goes away (a closed terminal, `| head`) must not end a run that is not yet safe. */
 export function processStreams(): Streams {
+  for (const stream of [process.stdout, process.stderr]) stream.on('error', () => undefined);
   return { stdin: process.stdin, stdout: process.stdout, stderr: process.stderr, environment: process.env };
 }

@@ -1,0 +1,22 @@
+import { describe, expect, it } from 'vitest';
+import { statusOfError, statusOfOutcome } from '../../src/cli/exit-status.js';
+import { GuardTrippedError } from '../../src/bench/bench-error.js';
+import { RecordWriteError } from '../../src/record/record-error.js';
+
+describe('the exit status', () => {
+  it.each([
+    ['conforms', 0],
+    ['not-judged', 0],
+    ['does-not-conform', 1],
+    ['undecided', 2],
+  ] as const)('of %s is %i', (outcome, status) => {
+    expect(statusOfOutcome(outcome)).toBe(status);
+  });
+
+  it('of an error is its own, and of what nobody foresaw 70', () => {
+    expect(statusOfError(new GuardTrippedError('over-voltage', 'too much', ''))).toBe(3);
+    expect(statusOfError(new RecordWriteError('journal.jsonl', new Error('no')))).toBe(74);
+    expect(statusOfError(new TypeError('ours'))).toBe(70);
+    expect(statusOfError('a string')).toBe(70);
+  });
+});

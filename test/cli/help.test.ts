@@ -1,0 +1,65 @@
+import { mkdtempSync, readFileSync, rmSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { afterAll, describe, expect, it } from 'vitest';
+import { ended, railproof, start } from '../whole/railproof.js';
+
+const folder = mkdtempSync(join(tmpdir(), 'railproof-help-'));
+const commands = ['run', 'analyse', 'check', 'drivers', 'ports', 'simulate', 'safe', 'runs', 'schema'];
+
+afterAll(() => {
+  rmSync(folder, { recursive: true, force: true });
+});
+
+/** The words of the example that a command's help shows, without what the shell would do with its output. */
+async function exampleOf(command: string): Promise<readonly string[]> {
+  const { stdout, status } = await railproof([command, '--help']);
+  expect(status).toBe(0);
+  const line = /\nExample:\n {2}railproof (.*)\n/.exec(stdout)?.[1] ?? '';
+  expect(line.startsWith(command)).toBe(true);
+  return line.replace(/ > .*$/, '').split(' ');
+}
+
+describe('help', () => {
+  it('names every command, and the exit statuses', async () => {
+    const { stdout } = await railproof(['--help']);
+    for (const command of commands) expect(stdout).toMatch(new RegExp(`^ {2}${command}\\b`, 'm'));
+    expect(stdout).toContain('69 instrument unreachable or lost');
+  });
+
+  it.each(commands.filter((command) => command !== 'simulate' && command !== 'run'))(
+    'of %s shows an example that works',
+    async (command) => {
+      const { status, stdout, stderr } = await railproof(await exampleOf(command));
+      expect(stderr).not.toMatch(/error|Usage/);
+      expect(stdout).not.toBe('');
+      expect(status).toBe(0);
+    },
+  );
+
+  it('of run shows an example that works', async () => {
+    const { status, stdout } = await railproof([...(await exampleOf('run')), '--runs', folder]);
+    expect(stdout).toContain('recommended-current');
+    expect(status).toBe(0);
+  });
+
+  it('of simulate shows an example that works, until it is stopped', async () => {
+    const child = start(await exampleOf('simulate'));
+    child.stderr?.once('data', () => setTimeout(() => child.kill('SIGINT'), 300));
+    const { status, stdout } = await ended(child);
+    expect(stdout).toMatch(/^railproof: bench 1\n/);
+    expect(stdout).not.toContain('simulation:');
+    expect(status).toBe(0);
+  });
+
+  it('with a wrong word ends with status 64 and says what was wrong', async () => {
+    const { status, stderr } = await railproof(['analize', 'x']);
+    expect(stderr).toMatch(/unknown command 'analize'/);
+    expect(status).toBe(64);
+  });
+
+  it('and the package give the same version', async () => {
+    const { version } = JSON.parse(readFileSync('package.json', 'utf8')) as { version: string };
+    expect((await railproof(['--version'])).stdout).toBe(`${version}\n`);
+  });
+});

@@ -1,0 +1,97 @@
+import { mkdtempSync, readFileSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { connect } from 'node:net';
+import { once } from 'node:events';
+import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest';
+import { ended, start } from './railproof.js';
+import { serve, type Served } from './served.js';
+
+const folder = mkdtempSync(join(tmpdir(), 'railproof-stopping-'));
+let served: Served;
+let count = 0;
+
+beforeEach(async () => {
+  count += 1;
+  served = await serve('fixtures/benches/nursery.yaml', join(folder, `bench-${count}.yaml`), 'tcp');
+});
+
+afterEach(async () => {
+  await served.close();
+});
+
+afterAll(() => {
+  rmSync(folder, { recursive: true, force: true });
+});
+
+/** Asks the load itself, on a line of its own, as somebody at its front panel would look. */
+async function inputState(bench: string): Promise<string> {
+  const port = Number(/load:.*tcp:\/\/127\.0\.0\.1:(\d+)/.exec(readFileSync(bench, 'utf8'))?.[1]);
+  const socket = connect(port, '127.0.0.1');
+  socket.write('INP?\n');
+  const [reply] = (await once(socket, 'data')) as [Buffer];
+  socket.destroy();
+  return reply.toString().trim();
+}
+
+describe('a run that is stopped in the middle leaves the load off and the record whole', () => {
+  const brisk = join(folder, 'brisk.yaml');
+  writeFileSync(
+    brisk,
+    'railproof: procedure 1\nname: brisk\ntitle: Brisk\nsteps:\n  - load-ramp: { from: 1 A, to: 3 A, points: 200, dwell: 100 ms }\n',
+  );
+
+  it.each([
+    ['SIGINT', /stopped with Ctrl-C/],
+    ['SIGTERM', /SIGTERM/],
+    ['SIGHUP', /SIGHUP/],
+  ] as const)('by %s', async (signal, words) => {
+    const runs = join(folder, `runs-${count}`);
+    const child = start([
+      ...['run', brisk, '--bench', served.bench, '--module', 'fixtures/modules/K1.yaml'],
+      ...['--runs', runs, '--yes'],
+    ]);
+    const end = ended(child);
+    await energised(runs);
+    expect(await inputState(served.bench)).toBe('1');
+    child.kill(signal);
+    const { status, stderr } = await end;
+    expect(status).toBe(3);
+    expect(stderr).toMatch(words);
+    expect(stderr).toContain('The load is off; it was read back.');
+    expect(await inputState(served.bench)).toBe('0');
+    const journal = readFileSync(join(runs, readdirSync(runs)[0] ?? '', 'journal.jsonl'), 'utf8');
+    expect(journal.trimEnd().split('\n').at(-1)).toMatch(
+      /"event":"ended","how":"stopped".*"seal":"[0-9a-f]{64}"\}$/,
+    );
+  });
+
+  it('by the instruments vanishing: the last words say what to do by hand', async () => {
+    const runs = join(folder, `runs-${count}`);
+    const child = start([
+      ...['run', brisk, '--bench', served.bench, '--module', 'fixtures/modules/K1.yaml'],
+      ...['--runs', runs, '--yes'],
+    ]);
+    const end = ended(child);
+    await energised(runs);
+    await served.close();
+    const { status, stderr } = await end;
+    expect(status).toBe(69);
+    expect(stderr).toContain('It could not be confirmed that the load is off');
+    expect(stderr.trimEnd().split('\n').at(-1)).toMatch(
+      /THE LOAD MAY STILL BE ON\. Switch its input off at its front panel/,
+    );
+  });
+});
+
+async function energised(runs: string): Promise<void> {
+  for (;;) {
+    try {
+      const journal = readFileSync(join(runs, readdirSync(runs)[0] ?? '', 'journal.jsonl'), 'utf8');
+      if (/"phase":"ramp"/.test(journal)) return;
+    } catch {
+      // Not there yet.
+    }
+    await new Promise((resolve) => setTimeout(resolve, 20));
+  }
+}
