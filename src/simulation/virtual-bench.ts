@@ -49,6 +49,7 @@ export class VirtualBench {
   readonly #hardware: LoadHardware;
   readonly #listeners: StepListener[] = [];
   #load: LoadState = loadAtRest;
+  #law: LoadLaw;
   #state: ModuleState;
   #input: 'present' | 'absent' | 'dead' = 'present';
   #reversed = false;
@@ -57,6 +58,7 @@ export class VirtualBench {
   constructor(module: SimulatedModule, hardware: LoadHardware, faults: readonly WorldFault[] = []) {
     this.module = module;
     this.#hardware = hardware;
+    this.#law = lawOf(loadAtRest, hardware);
     this.#faults = faults.toSorted((one, other) => one.at - other.at);
     this.#state = freshModule(0);
   }
@@ -89,7 +91,7 @@ export class VirtualBench {
     this.#act(at, () => {
       this.#input = input;
       this.#state =
-        input === 'present' ? powered(this.module, this.#state, this.#law()) : unpowered(this.#state);
+        input === 'present' ? powered(this.module, this.#state, this.#law) : unpowered(this.#state);
     });
   }
 
@@ -103,7 +105,7 @@ export class VirtualBench {
     if (first !== undefined) this.#carryOn(first);
     let state = this.#state;
     return moments.map((at) => {
-      state = advance(this.module, state, this.#law(), at);
+      state = advance(this.module, state, this.#law, at);
       return this.#momentOf(state);
     });
   }
@@ -121,7 +123,7 @@ export class VirtualBench {
       this.#faults.shift();
       this.#suffer(fault);
     }
-    this.#state = advance(this.module, this.#state, this.#law(), at);
+    this.#state = advance(this.module, this.#state, this.#law, at);
   }
 
   /** Dead stays dead. Reversed, no current is sunk and every voltage is negative. */
@@ -140,17 +142,14 @@ export class VirtualBench {
   }
 
   #takeLoad(load: LoadState): void {
-    const before = this.#law();
+    const before = this.#law;
     this.#load = load;
-    this.#state = onNewLoad(this.module, this.#state, before, this.#law());
-  }
-
-  #law(): LoadLaw {
-    return this.#reversed ? { kind: 'open' } : lawOf(this.#load, this.#hardware);
+    this.#law = this.#reversed ? { kind: 'open' } : lawOf(load, this.#hardware);
+    this.#state = onNewLoad(this.module, this.#state, before, this.#law);
   }
 
   #momentOf(state: ModuleState): Moment {
-    const { voltage, current } = outputOf(this.module, state, this.#law());
+    const { voltage, current } = outputOf(this.module, state, this.#law);
     const sign = this.#reversed ? -1 : 1;
     return {
       at: state.at,

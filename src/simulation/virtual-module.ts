@@ -144,10 +144,10 @@ function stretch(module: SimulatedModule, state: ModuleState, law: LoadLaw, unti
       : until;
   const target = steadyRise(module, meanSquareCurrent(module, state, state.rise, law));
   const risen = (at: Seconds): Kelvins => riseAfter(module, state.rise, target, at - state.at);
+  const could = couldDeliver(module, state, state.rise, law);
   const end = currentIsSteady(module, state, risen(goal), law)
     ? goal
     : Math.min(goal, state.at + step(module));
-  const could = couldDeliver(module, state, state.rise, law);
   const holds = (at: Seconds): boolean => couldDeliver(module, state, risen(at), law) === could;
   const turn = holds(end) ? end : firstFailing(holds, state.at, end);
   return { at: turn, rise: risen(turn), phase };
@@ -196,10 +196,20 @@ function meanSquareCurrent(
   }
 }
 
+/** Where the module delivers, if it can. Asked again and again of one moment, so the last answer is kept. */
 function heldPoint(module: SimulatedModule, rise: Kelvins, law: LoadLaw): Corner | undefined {
+  const last = lastHeld.get(law);
+  if (last?.module === module && last.rise === rise) return last.point;
   const highest = operatingPoints(curveOf(module, rise), law)[0];
-  return highest !== undefined && isHeld(module, rise, highest) ? highest : undefined;
+  const point = highest !== undefined && isHeld(module, rise, highest) ? highest : undefined;
+  lastHeld.set(law, { module, rise, point });
+  return point;
 }
+
+const lastHeld = new WeakMap<
+  LoadLaw,
+  { readonly module: SimulatedModule; readonly rise: Kelvins; readonly point: Corner | undefined }
+>();
 
 /** Coming from below: even the lowest point at which it could rest is one at which it delivers. */
 function mustDeliver(module: SimulatedModule, rise: Kelvins, law: LoadLaw): boolean {
