@@ -5,7 +5,7 @@ import type { Evidence } from './evidence.js';
 import type { Finding } from './finding.js';
 import { leadFindings } from './lead-resistance.js';
 import { limitStyleFindings } from './limit-style.js';
-import { onsetFindings } from './onset.js';
+import { findKnee, onsetFindings } from './onset.js';
 import { openCircuitFindings } from './open-circuit.js';
 import { recommendedFindings } from './recommended-current.js';
 import { recoveryFindings } from './recovery.js';
@@ -21,10 +21,10 @@ export function analyse(evidence: Evidence): readonly Finding[] {
   const held = heldPoints(evidence.steps);
   const unsteady = steadinessFindings(evidence, held);
   const steady = held.filter((point) => point.current < numberOf(unsteady, Number.POSITIVE_INFINITY));
-  const onset = onsetFindings(evidence, steady);
+  const knee = findKnee(steady);
   const ramp = new Set(stepsOf(evidence, 'load-ramp').map((step) => step.step));
   const regulated = steady.filter(
-    (point) => ramp.has(point.step) && point.current < numberOf(onset, Number.POSITIVE_INFINITY),
+    (point) => ramp.has(point.step) && point.current < (knee?.breakpoint ?? Number.POSITIVE_INFINITY),
   );
   const idle = openCircuitFindings(evidence);
   const regulation = regulationFindings(evidence, regulated, idle.length > 0);
@@ -41,7 +41,7 @@ export function analyse(evidence: Evidence): readonly Finding[] {
     ...recommendedFindings(evidence, usable[0]),
     ...idle,
     ...regulation,
-    ...onset,
+    ...onsetFindings(evidence, steady, knee),
     ...unsteady,
     ...dropout,
     ...style,
