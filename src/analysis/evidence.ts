@@ -84,6 +84,7 @@ export class EvidenceCollector {
       }
       case 'point-began':
         this.#point = newPoint(event, event.t);
+        this.#forgetSample();
         step?.points.push(this.#point);
         return;
       case 'point-ended':
@@ -133,12 +134,16 @@ export class EvidenceCollector {
     if (of === 'load' && what === 'voltage') this.#loadVoltage = number;
     if (of !== 'load' || what !== 'current') return;
     const voltage = this.#moduleVoltage(number);
-    if (!Number.isNaN(voltage)) point.moduleVoltage.add(voltage);
-    if (!Number.isNaN(this.#loadVoltage)) point.loadVoltage.add(this.#loadVoltage);
-    if (!Number.isNaN(number)) point.current.add(number);
+    addIfNumber(point.moduleVoltage, voltage);
+    addIfNumber(point.loadVoltage, this.#loadVoltage);
+    addIfNumber(point.current, number);
     if (point.phase === 'overload' && point.samples.length < mostSamples) {
       point.samples.push({ voltage, current: number });
     }
+    this.#forgetSample();
+  }
+
+  #forgetSample(): void {
     this.#loadVoltage = Number.NaN;
     this.#meterVoltage = Number.NaN;
   }
@@ -149,6 +154,11 @@ export class EvidenceCollector {
       ? this.#meterVoltage
       : this.#loadVoltage + current * leads.resistance;
   }
+}
+
+/** A journal made elsewhere may hold 1e999, which JSON reads as infinite. */
+function addIfNumber(moments: RunningMoments, value: number): void {
+  if (Number.isFinite(value)) moments.add(value);
 }
 
 function newPoint({ point, phase, set }: PointBegan, t: Seconds): Growing<PointEvidence> {
