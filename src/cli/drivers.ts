@@ -86,7 +86,7 @@ const widthOfName = 16;
 const widthOfSent = 22;
 
 function resultLine({ verdict, name, sent, received, detail, seconds }: TrialResult): string {
-  const answered = received === undefined ? '' : `→ ${received}`;
+  const answered = received === undefined || received === '' ? '' : `→ ${received}`;
   const time = verdict === 'not-sent' ? '' : `${Math.round(seconds * 1000)} ms`;
   return [
     verdict.padEnd(widthOfVerdict),

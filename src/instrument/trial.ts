@@ -117,7 +117,7 @@ class Trial {
       if (clear)
         return {
           ...understood(received),
-          detail: entries.length > 0 ? 'errors from before, now cleared' : '',
+          detail: entries.length > 0 ? 'errors from before, now cleared' : 'no errors',
         };
       return { received, verdict: 'unclear', detail: 'it does not get clear; does "clear" fit its answer?' };
     });
@@ -128,7 +128,7 @@ class Trial {
     if (reason === undefined) {
       return this.told('operation', operation, fillMessage(message, this.#harmless(operation)));
     }
-    const answer: Answer = { received: undefined, verdict: 'not-sent', detail: `not sent: ${reason}` };
+    const answer: Answer = { received: undefined, verdict: 'not-sent', detail: reason };
     return Promise.resolve({ part: 'operation', name: operation, sent: message, ...answer, seconds: 0 });
   }
 

@@ -52,7 +52,7 @@ describe('trying a driver', () => {
     expect(voltage).toMatchObject({ part: 'reading', detail: '15.1' });
     expect(voltage?.seconds).toBeCloseTo(0.01, 9);
     expect(results.at(-1)).toMatchObject({ part: 'proof', detail: 'off' });
-    expect(results.find(({ verdict }) => verdict === 'not-sent')?.detail).toBe('not sent: would switch on');
+    expect(results.find(({ verdict }) => verdict === 'not-sent')?.detail).toBe('would switch on');
   });
 
   it('goes on after a question that is not answered', async () => {
