@@ -1,5 +1,4 @@
-import { type ModuleCurve, withLimitScaled } from '../circuit/module-curve.js';
-import { knee } from '../circuit/module-curve.js';
+import { type ModuleCurve, knee, withLimitScaled } from '../circuit/module-curve.js';
 import type { SimulatedModule } from '../files/simulation-section.js';
 import type { Kelvins, Ratio, Volts } from '../quantity/quantity.js';
 import { limitFactor } from './warming.js';

@@ -6,29 +6,53 @@ import { readBench } from '../../src/files/read-bench.js';
 import { readDriver } from '../../src/files/read-driver.js';
 import { dialectFor } from '../../src/simulation/dialects/choose-dialect.js';
 import { openSimulation } from '../../src/simulation/open-simulation.js';
-import { ask } from './bench-parts.js';
+import { trueValues } from '../../src/simulation/true-values.js';
+import { Instrument } from '../../src/instrument/instrument.js';
 
 const root = join(import.meta.dirname, '../..');
 const shelves = { relativeTo: root, shipped: join(root, 'drivers') };
 const benches = readdirSync(join(root, 'fixtures/benches')).filter((file) => file.endsWith('.yaml'));
 
 describe('the benches that come with the project', () => {
-  it.each(benches)('%s opens, and both its instruments say who they are', async (file) => {
-    const { value: bench } = await readBench(join(root, 'fixtures/benches', file));
-    const { simulation, instruments } = bench;
-    if (simulation === undefined || instruments.meter === undefined)
-      throw new Error('no simulation or no meter');
-    const { value: load } = await readDriver(instruments.load.driver, shelves);
-    const { value: meter } = await readDriver(instruments.meter.driver, shelves);
-    const opened = openSimulation({
-      simulation,
-      clock: new VirtualClock(new Date(0)),
-      drivers: { load, meter },
-    });
-    expect(await ask(opened.connect('load', load), load.identify)).toMatch(/simulated load/);
-    expect(await ask(opened.connect('meter', meter), meter.identify)).toMatch(/simulated meter/);
-    expect(opened.world.look([0])[0]?.moduleVoltage).toBe(simulation.modules[0]?.openCircuitVoltage);
-  });
+  it.each(benches)(
+    '%s is worked through its own drivers, and shows its module within their accuracy',
+    async (file) => {
+      const { value: bench } = await readBench(join(root, 'fixtures/benches', file));
+      const { simulation, instruments } = bench;
+      const [module] = simulation?.modules ?? [];
+      if (simulation === undefined || module === undefined || instruments.meter === undefined) {
+        throw new Error('no simulation, module or meter');
+      }
+      const { value: loadDriver } = await readDriver(instruments.load.driver, shelves);
+      const { value: meterDriver } = await readDriver(instruments.meter.driver, shelves);
+      const clock = new VirtualClock(new Date(0));
+      const opened = openSimulation({ simulation, clock, drivers: { load: loadDriver, meter: meterDriver } });
+      const open = (role: 'load' | 'meter', driver: typeof loadDriver): Promise<Instrument> =>
+        Instrument.open({ role, driver, connection: opened.connect(role, driver), clock });
+      const load = await open('load', loadDriver);
+      const meter = await open('meter', meterDriver);
+      expect(load.identity).toBe('railproof,simulated load,K-bench,1');
+
+      const { droopResistance, openCircuitVoltage } = trueValues(simulation, module);
+      await load.perform('current-mode');
+      await load.perform('set-current', { amps: 2 });
+      await load.perform('input-on');
+      await clock.sleep(0.5);
+      expect(await load.flag('input-state')).toBe(true);
+      const volts = await meter.read('voltage');
+      const promised = meterDriver.accuracy['voltage'];
+      if (volts.kind !== 'value' || promised === undefined) throw new Error('no value or no accuracy');
+      const expected = openCircuitVoltage - 2 * droopResistance;
+      expect(Math.abs(volts.value - expected)).toBeLessThan(
+        promised.ofReading * expected + promised.fixed + 5 * module.noise,
+      );
+      const amps = await load.read('current');
+      expect(amps.kind === 'value' && Math.abs(amps.value - 2)).toBeLessThan(0.03);
+
+      await load.perform('make-safe');
+      expect(await load.flag('input-state')).toBe(false);
+    },
+  );
 
   it.each([
     ['load-input-scpi', 'standard-load'],
