@@ -52,7 +52,8 @@ export function parseYaml(text: string, fileName: string): YamlDocument {
     merge: false,
     prettyErrors: false,
     lineCounter: lines,
-    logLevel: 'silent',
+    // 'silent' would also keep quiet about a second document.
+    logLevel: 'error',
   });
   const problem = syntaxProblem(document) ?? limitProblem(document);
   if (problem !== undefined) return refuse([problem]);

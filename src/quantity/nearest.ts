@@ -3,7 +3,7 @@ import { distance } from 'fastest-levenshtein';
 /**
  * The spelling closest to what was typed, or undefined when nothing is close, so that a guess is offered
  * only where a person would make the same one: one edit in a short word, two from five letters on, one
- * for each three letters in a long one. Two neighbouring letters exchanged count as one edit.
+ * for each three letters in a long one, and never all of them. Two neighbouring letters exchanged count as one edit.
  */
 export function nearest(typed: string, spellings: Iterable<string>): string | undefined {
   const word = typed.slice(0, longestGuessed).toLowerCase();
@@ -11,7 +11,7 @@ export function nearest(typed: string, spellings: Iterable<string>): string | un
   let fewest = (word.length < 5 ? 1 : Math.max(2, Math.floor(word.length / 3))) + 1;
   for (const spelling of spellings) {
     const edits = editsBetween(word, spelling.toLowerCase());
-    if (edits < fewest) {
+    if (edits < fewest && edits < spelling.length) {
       fewest = edits;
       best = spelling;
     }
