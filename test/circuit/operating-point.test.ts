@@ -67,9 +67,7 @@ const curves: fc.Arbitrary<ModuleCurve> = fc
   .map(({ current, share, style, ...regulated }) => ({
     ...regulated,
     limit:
-      style === 'foldback'
-        ? { style, current, shortCircuit: current * share }
-        : { style: style, current },
+      style === 'foldback' ? { style, current, shortCircuit: current * share } : { style: style, current },
   }));
 const laws: fc.Arbitrary<LoadLaw> = fc.oneof(
   fc.constant<LoadLaw>({ kind: 'open' }),
