@@ -1,4 +1,4 @@
-import { closeSync, fdatasyncSync, openSync, writeSync } from 'node:fs';
+import { closeSync, fdatasyncSync, ftruncateSync, openSync, writeSync } from 'node:fs';
 import type { Hash } from 'node:crypto';
 import type { Seconds } from '../quantity/quantity.js';
 import { sealedEvents, type JournalEvent } from './journal-event.js';
@@ -15,6 +15,10 @@ export class JournalWriter {
   readonly #began: Seconds;
   readonly #now: () => Seconds;
   readonly #hash: Hash = newSealer();
+  /** Of whole lines. */
+  #bytes = 0;
+  /** Set when a torn line could not be taken back: what came after it would be joined to it. */
+  #torn: RecordWriteError | undefined;
 
   /** @throws RecordWriteError when the file is there already or can't be made. */
   constructor(path: string, now: () => Seconds) {
@@ -28,19 +32,35 @@ export class JournalWriter {
     }
   }
 
-  /** @throws RecordWriteError */
+  /**
+   * When a line can't be written whole, what was written of it is taken back, so that a later one (the end of
+   * the run, where there is room again) stands on a line of its own.
+   * @throws RecordWriteError
+   */
   append(event: JournalEvent): void {
+    if (this.#torn !== undefined) throw this.#torn;
     const t = Math.round((this.#now() - this.#began) * 1e6) / 1e6;
     const sealed = sealedEvents.has(event.event);
     const plain = JSON.stringify({ t, ...event });
-    const line = (sealed ? sealLine(this.#hash, plain) : plain) + '\n';
+    const line = Buffer.from((sealed ? sealLine(this.#hash, plain) : plain) + '\n');
     try {
-      writeAll(this.#file, Buffer.from(line));
+      writeAll(this.#file, line);
       if (sealed) fdatasyncSync(this.#file);
     } catch (cause) {
-      throw new RecordWriteError(this.#path, cause);
+      const error = new RecordWriteError(this.#path, cause);
+      this.#takeBack(error);
+      throw error;
     }
     this.#hash.update(line);
+    this.#bytes += line.length;
+  }
+
+  #takeBack(error: RecordWriteError): void {
+    try {
+      ftruncateSync(this.#file, this.#bytes);
+    } catch {
+      this.#torn = error;
+    }
   }
 
   close(): void {
