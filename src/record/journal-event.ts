@@ -57,8 +57,18 @@ export interface StepBegan {
  * What a point is for: `idle` input off; `ramp` on the way up; `start`, `climb`, `halve` and `return`
  * belong to a search; `steadiness` looks for the first unsteady current; `overload` is watched past the limit; `recovery` is after it.
  */
-export type Phase =
-  'idle' | 'ramp' | 'start' | 'climb' | 'halve' | 'return' | 'steadiness' | 'overload' | 'recovery';
+export const phases = [
+  'idle',
+  'ramp',
+  'start',
+  'climb',
+  'halve',
+  'return',
+  'steadiness',
+  'overload',
+  'recovery',
+] as const;
+export type Phase = (typeof phases)[number];
 
 export interface PointBegan {
   readonly event: 'point-began';

@@ -1,5 +1,6 @@
 import { closeSync, openSync, readSync } from 'node:fs';
-import { type JournalEvent, journalFormat, type ReadingTaken, type TimedEvent } from './journal-event.js';
+import type { TimedEvent } from './journal-event.js';
+import { parseLine } from './journal-line.js';
 import { NoRecordError } from './record-error.js';
 import { isSealed, newSealer, sealHolds } from './seal.js';
 
@@ -69,11 +70,12 @@ class JournalCheck {
 
   #problemWith(line: Buffer, whole: boolean): string | undefined {
     if (this.#ended) return 'there is more after the end';
+    if (line.length > longestLine) return 'the line is too long for an event';
     if (!whole) return undefined;
     if (isSealed(line)) {
       return sealHolds(this.#hash, line) ? undefined : 'the seal does not agree with the lines before it';
     }
-    const isObject = line[0] === 0x7b && line.at(-1) === 0x7d && line.length <= longestLine;
+    const isObject = line[0] === 0x7b && line.at(-1) === 0x7d;
     return isObject ? undefined : 'the line is no event';
   }
 }
@@ -91,7 +93,7 @@ export function readJournal(
   let bytes = 0;
   let result = integrity;
   eachLine(path, integrity.bytes, (line) => {
-    const event = parseEvent(line.toString('utf8'), lines === 0);
+    const event = parseLine(line, lines === 0);
     if (event === undefined) {
       result = { kind: 'damaged', lines, bytes, line: lines + 1, problem: 'the line is no event' };
       return 'stop';
@@ -121,7 +123,7 @@ function eachLine(
     let kept: Buffer = Buffer.alloc(0);
     let left = upTo;
     while (left > 0) {
-      const count = readSync(file, chunk, 0, Math.min(chunkSize, left), null);
+      const count = readInto(chunk, file, Math.min(chunkSize, left), path);
       if (count === 0) break;
       left -= count;
       const data =
@@ -140,46 +142,10 @@ function eachLine(
   }
 }
 
-const knownEvents: ReadonlySet<string> = new Set<JournalEvent['event']>([
-  'opened',
-  'instrument',
-  'caution',
-  'step-began',
-  'point-began',
-  'reading',
-  'point-ended',
-  'input',
-  'recovery',
-  'prompt',
-  'answer',
-  'notice',
-  'guard-tripped',
-  'step-ended',
-  'ended',
-]);
-
-/** Parsing by hand, not by schema: there may be millions of these lines, and the seals guard their content. */
-function parseEvent(line: string, first: boolean): TimedEvent | undefined {
-  let event: Partial<TimedEvent>;
+function readInto(chunk: Buffer, file: number, most: number, path: string): number {
   try {
-    event = JSON.parse(line) as Partial<TimedEvent>;
-  } catch {
-    return undefined;
+    return readSync(file, chunk, 0, most, null);
+  } catch (cause) {
+    throw new NoRecordError(path, cause);
   }
-  if (typeof event.t !== 'number' || typeof event.event !== 'string' || !knownEvents.has(event.event))
-    return undefined;
-  if (first !== (event.event === 'opened')) return undefined;
-  if (event.event === 'opened' && event.format !== journalFormat) return undefined;
-  if (event.event === 'reading' && !isReading(event)) return undefined;
-  return event as TimedEvent;
-}
-
-function isReading(event: Partial<ReadingTaken>): boolean {
-  return (
-    typeof event.step === 'number' &&
-    typeof event.point === 'number' &&
-    typeof event.of === 'string' &&
-    typeof event.what === 'string' &&
-    (typeof event.value === 'number' || event.value === null)
-  );
 }
