@@ -1,9 +1,8 @@
-import { closeSync, openSync, renameSync, writeSync } from 'node:fs';
+import { writeFileSync } from 'node:fs';
 import { stringify } from 'csv-stringify/sync';
 import type { PointBegan } from './journal-event.js';
 import { checkJournal, readJournal } from './journal-reader.js';
-import { RecordWriteError } from './record-error.js';
-import type { RunFolder } from './run-folder.js';
+import { replaceFileBy, type RunFolder } from './run-folder.js';
 
 const columns = [
   'time (s)',
@@ -36,31 +35,22 @@ const batchSize = 500;
  * Writes readings.csv (RFC 4180, units in the header) from the journal: one row for each sample, which
  * is all that was read at one moment. Empty cells were not read, or the instrument had no value.
  * Only a batch of rows is ever in memory.
- * @throws RecordWriteError
+ * @throws RecordWriteError, NoRecordError
  */
 export function writeReadingsCsv(folder: RunFolder): void {
-  const unfinished = `${folder.readings}.new`;
-  try {
-    const file = openSync(unfinished, 'w');
-    try {
-      let batch: Row[] = [];
-      const write = (header: boolean): void => {
-        writeSync(file, stringify(batch, { header, columns: [...columns], record_delimiter: 'windows' }));
-        batch = [];
-      };
-      write(true);
-      eachSample(folder.journal, (row) => {
-        batch.push(row);
-        if (batch.length === batchSize) write(false);
-      });
-      write(false);
-    } finally {
-      closeSync(file);
-    }
-    renameSync(unfinished, folder.readings);
-  } catch (cause) {
-    throw new RecordWriteError(folder.readings, cause);
-  }
+  replaceFileBy(folder.readings, (file) => {
+    let batch: Row[] = [];
+    const write = (header: boolean): void => {
+      writeFileSync(file, stringify(batch, { header, columns: [...columns], record_delimiter: 'windows' }));
+      batch = [];
+    };
+    write(true);
+    eachSample(folder.journal, (row) => {
+      batch.push(row);
+      if (batch.length === batchSize) write(false);
+    });
+    write(false);
+  });
 }
 
 function eachSample(journal: string, visit: (row: Row) => void): void {

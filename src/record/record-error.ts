@@ -52,7 +52,8 @@ const reasons: Readonly<Record<string, string>> = {
   EROFS: 'the file system is read-only',
   ENOENT: 'there is no such file or folder',
   ENOTDIR: 'a part of the path is not a folder',
-  EEXIST: 'it is there already',
+  EEXIST: 'something of that name is there already',
+  EFBIG: 'it is larger than a file may be here',
   EISDIR: 'it is a folder',
   EIO: 'the disk reports an error',
 };

@@ -1,5 +1,6 @@
-import { closeSync, fsyncSync, mkdirSync, openSync, renameSync, writeFileSync, writeSync } from 'node:fs';
+import { closeSync, fsyncSync, mkdirSync, openSync, renameSync, rmSync, writeFileSync } from 'node:fs';
 import { basename, join } from 'node:path';
+import { RailproofError } from '../errors/railproof-error.js';
 import { RecordWriteError } from './record-error.js';
 import type { RunHeader } from './run-header.js';
 
@@ -53,7 +54,7 @@ export function writeHeader(folder: RunFolder, header: RunHeader): void {
   try {
     const file = openSync(path, 'wx');
     try {
-      writeSync(file, JSON.stringify(header, null, 2) + '\n');
+      writeFileSync(file, JSON.stringify(header, null, 2) + '\n');
       fsyncSync(file);
     } finally {
       closeSync(file);
@@ -63,12 +64,41 @@ export function writeHeader(folder: RunFolder, header: RunHeader): void {
   }
 }
 
-/** Writes a file of the record that can be made again, so that no reader ever sees half of it. */
+/**
+ * Writes a file of the record that can be made again, so that no reader ever sees half of it.
+ * @throws RecordWriteError
+ */
 export function replaceFile(path: string, text: string): void {
+  replaceFileBy(path, (file) => {
+    writeFileSync(file, text);
+  });
+}
+
+/**
+ * The same for one that is written bit by bit; `write` is given the file's descriptor.
+ * @throws RecordWriteError; whatever else `write` throws that has to do with another file
+ */
+export function replaceFileBy(path: string, write: (file: number) => void): void {
+  const unfinished = `${path}.new`;
   try {
-    writeFileSync(`${path}.new`, text);
-    renameSync(`${path}.new`, path);
+    const file = openSync(unfinished, 'w');
+    try {
+      write(file);
+    } finally {
+      closeSync(file);
+    }
+    renameSync(unfinished, path);
   } catch (cause) {
-    throw new RecordWriteError(path, cause);
+    discard(unfinished);
+    throw cause instanceof RailproofError ? cause : new RecordWriteError(path, cause);
+  }
+}
+
+/** What is left of a failed attempt only takes space; that it can't be removed is no news then. */
+function discard(path: string): void {
+  try {
+    rmSync(path, { force: true });
+  } catch {
+    // The error that is under way says what is wrong with this place.
   }
 }
