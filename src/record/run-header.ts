@@ -1,4 +1,4 @@
-import { readFileSync } from 'node:fs';
+import { existsSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { z } from 'zod';
 import { BadRecordError, NoRecordError } from './record-error.js';
@@ -90,7 +90,7 @@ export function readHeader(folder: string): RunHeader {
   try {
     text = readFileSync(path, 'utf8');
   } catch (cause) {
-    throw new NoRecordError(folder, cause);
+    throw new NoRecordError(folder, existsSync(folder) && !existsSync(path) ? undefined : cause);
   }
   let data: unknown;
   try {
@@ -100,6 +100,7 @@ export function readHeader(folder: string): RunHeader {
   }
   const parsed = headerSchema.safeParse(data);
   if (parsed.success) return parsed.data;
-  const issue = parsed.error.issues[0];
-  throw new BadRecordError(path, `${issue?.path.join('.') ?? ''}: ${issue?.message ?? 'unreadable'}`);
+  const [issue] = parsed.error.issues;
+  const where = issue === undefined || issue.path.length === 0 ? '' : `${issue.path.join('.')}: `;
+  throw new BadRecordError(path, `${where}${issue?.message ?? 'it is unreadable'}`);
 }
