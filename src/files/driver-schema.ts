@@ -5,6 +5,7 @@ import { readUnit } from '../quantity/units.js';
 import { choice, line, name, quantity, readFromText } from './building-blocks.js';
 import { camelKeys, withoutHeader } from './camel-keys.js';
 import { driverProblems } from './driver-checks.js';
+import { operationWords, readingWords } from './driver-words.js';
 import { operationsOf, readingsOf, type Driver, type DriverReading } from './driver.js';
 import { regularExpression } from './driver-expression.js';
 import { headers } from './file-kind.js';
@@ -84,7 +85,7 @@ const accuracy = Object.fromEntries(
         resolution: quantity(fixedUnit, 'The step of the last digit.', { least: 0 }).exactOptional(),
       }),
     );
-    return [each, promised.exactOptional()];
+    return [each, promised.exactOptional().describe(`How far off a reading of ${each} may be.`)];
   }),
 );
 
@@ -124,10 +125,10 @@ export const driverSchema: z.ZodType<Driver> = z
     prepare: messages.default([]).describe('Sent once, when the instrument is taken into use.'),
     release: messages.default([]).describe('Sent once, when it is given back.'),
     operations: z
-      .strictObject(optionalKeys(operationsOf, messages))
+      .strictObject(optionalKeys(operationsOf, messages, operationWords))
       .describe('The messages for each operation; {amps} and {volts} stand for the value.'),
     readings: z
-      .strictObject(optionalKeys(readingsOf, reading))
+      .strictObject(optionalKeys(readingsOf, reading, readingWords))
       .prefault({})
       .describe('How each reading is asked for and read.'),
     settling: quantity('time', 'What the instrument needs after an operation before a reading counts.', {
@@ -159,7 +160,8 @@ export const driverSchema: z.ZodType<Driver> = z
 function optionalKeys<S extends z.ZodType>(
   byRole: Readonly<Record<string, { must: readonly string[]; may: readonly string[] }>>,
   schema: S,
+  words: Readonly<Record<string, string>>,
 ): Record<string, z.ZodExactOptional<S>> {
   const names = Object.values(byRole).flatMap(({ must, may }) => [...must, ...may]);
-  return Object.fromEntries(names.map((each) => [each, schema.exactOptional()]));
+  return Object.fromEntries(names.map((each) => [each, schema.exactOptional().describe(words[each] ?? '')]));
 }

@@ -4,6 +4,7 @@ import { checkValue } from './check-value.js';
 import { BadFileError } from './file-error.js';
 import { fileKinds, headers, type FileKind } from './file-kind.js';
 import { didYouMean } from './nearest.js';
+import { found } from './plain-words.js';
 import { parseYaml, type Complaint, type YamlDocument } from './yaml-document.js';
 
 /**
@@ -24,9 +25,9 @@ export function parseFile<T>(kind: FileKind, schema: z.ZodType<T>, text: string,
  */
 export function openDocument(kind: FileKind, text: string, fileName: string): YamlDocument {
   const document = parseYaml(text, fileName);
-  const found = headerKind(document);
-  if (found !== kind) {
-    const message = `this is a ${found} file; a ${kind} file is needed`;
+  const itsKind = headerKind(document);
+  if (itsKind !== kind) {
+    const message = `this is a ${itsKind} file; a ${kind} file is needed`;
     throw new BadFileError([document.place({ path: ['railproof'], message })]);
   }
   return document;
@@ -62,7 +63,8 @@ function headerKind(document: YamlDocument): FileKind {
   if (typeof value !== 'object' || !('railproof' in value)) return refuse(firstLine);
   if (topKeys[0] !== 'railproof') return refuse(`the line with 'railproof' must come first`, ['railproof']);
 
-  const header = String(value.railproof);
+  const header = value.railproof;
+  if (typeof header !== 'string') return refuse(`${found(header)}; ${firstLine}`, ['railproof']);
   const [, word = header, version] = /^(\S+) (\d+)$/.exec(header) ?? [];
   const kind = fileKinds.find((known) => known === word);
   if (kind === undefined) {

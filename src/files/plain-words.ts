@@ -9,7 +9,7 @@ type RawIssue = z.core.$ZodRawIssue;
 export function plainWords(issue: RawIssue): string {
   switch (issue.code) {
     case 'invalid_type':
-      return `${found(issue.input)}; ${typeWords[issue.expected] ?? issue.expected} is needed`;
+      return `${found(issue.input)}; ${typeWords[expectedType(issue)] ?? issue.expected} is needed`;
     case 'invalid_value':
       return notAmong(issue.input, issue.values.map(String));
     case 'unrecognized_keys':
@@ -53,6 +53,13 @@ export function unknownKey(key: string, known: readonly string[]): string {
   const hint =
     guess !== '' ? guess : known.length === 0 ? '; none is known here' : `; known here: ${known.join(', ')}`;
   return `unknown key ${shown(key)}${hint}`;
+}
+
+/** Of a whole number zod first says that it expects a number. */
+function expectedType(issue: RawIssue & { readonly code: 'invalid_type' }): string {
+  const definition = issue.inst?._zod.def;
+  const isWhole = definition !== undefined && 'format' in definition && definition.format === 'safeint';
+  return isWhole ? 'int' : issue.expected;
 }
 
 function knownKeys(issue: RawIssue): string[] {

@@ -73,7 +73,9 @@ const simulatedModule = camelKeys(
         ambient: quantity('temperature', 'The air around it.').prefault('23 °C'),
         'limit-per-kelvin': quantity('ratio', 'Change of the limit for each kelvin of rise.').prefault('0 %'),
       }),
-    ).exactOptional(),
+    )
+      .exactOptional()
+      .describe('How it warms, and what that does to its limit.'),
   }),
 );
 
@@ -85,7 +87,7 @@ const errors = Object.fromEntries(
       offset: quantity(unit, 'Error at zero.').default(0),
       resolution: quantity(unit, 'The step of the last digit.', { least: 0 }).default(0),
     });
-    return [reading, schema.exactOptional()];
+    return [reading, schema.exactOptional().describe(`The errors of its readings of ${reading}.`)];
   }),
 );
 
@@ -116,10 +118,10 @@ export const simulationSchema: z.ZodType<Simulation> = z
     modules: z.array(simulatedModule).min(1).max(64).describe('The modules, in the order of the circuit.'),
     instruments: z
       .strictObject({
-        load: simulatedInstrument.exactOptional(),
-        meter: simulatedInstrument.exactOptional(),
-        scanner: simulatedInstrument.exactOptional(),
-        source: simulatedInstrument.exactOptional(),
+        load: simulatedInstrument.exactOptional().describe('The load.'),
+        meter: simulatedInstrument.exactOptional().describe('The meter.'),
+        scanner: simulatedInstrument.exactOptional().describe('The scanner.'),
+        source: simulatedInstrument.exactOptional().describe('The source.'),
       })
       .default({})
       .describe('Errors of the instruments; those left out are drawn within the accuracy of the driver.'),

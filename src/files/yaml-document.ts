@@ -80,10 +80,16 @@ function offsetOf(document: Document, path: readonly PropertyKey[], key: string 
     const next: unknown = pair === undefined && isSeq(node) ? node.items[Number(part)] : pair?.value;
     if (pair === undefined && next === undefined) break;
     const atKey = key !== undefined && index === steps.length - 1;
-    offset = (atKey ? startOf(pair?.key) : startOf(next)) ?? startOf(pair?.key) ?? offset;
+    const isWritten = !atKey && !(pair !== undefined && isEmpty(next));
+    offset = (isWritten ? startOf(next) : undefined) ?? startOf(pair?.key) ?? offset;
     node = next;
   }
   return offset;
+}
+
+/** The value of a key that has nothing after its colon. */
+function isEmpty(node: unknown): boolean {
+  return isScalar(node) && node.range !== undefined && node.range !== null && node.range[0] === node.range[1];
 }
 
 function startOf(node: unknown): number | undefined {

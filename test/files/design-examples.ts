@@ -91,7 +91,9 @@ export const vocabulary: Vocabulary = {
   stepKinds: [
     {
       kind: 'open-circuit',
-      parameters: z.strictObject({ for: quantity('time', 'How long to watch.', { above: 0 }).prefault('5 s') }),
+      parameters: z.strictObject({
+        for: quantity('time', 'How long to watch.', { above: 0 }).prefault('5 s'),
+      }),
     },
     {
       kind: 'load-ramp',

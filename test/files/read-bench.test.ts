@@ -1,0 +1,234 @@
+import { describe, expect, it } from 'vitest';
+import { parseBench } from '../../src/files/read-bench.js';
+import { benchExample, simulationExample } from './design-examples.js';
+import { problemsOf } from './problems-of.js';
+
+const whole = benchExample + simulationExample;
+const changed = (find: string, replacement: string): string => {
+  expect(whole).toContain(find);
+  return whole.replace(find, replacement);
+};
+
+it('the example of the design is read', () => {
+  expect(parseBench(benchExample, 'bench.yaml')).toEqual({
+    name: 'corner bench',
+    instruments: {
+      load: { driver: 'load-input-scpi', connection: { kind: 'tcp', host: '127.0.0.1', port: 5025 } },
+      meter: {
+        driver: 'meter-read-scpi',
+        connection: {
+          kind: 'serial',
+          path: '/dev/ttyUSB0',
+          baud: 9600,
+          data: 8,
+          parity: 'none',
+          stop: 1,
+          flow: 'none',
+        },
+      },
+    },
+    leads: { resistance: 0.035, uncertainty: 0.005 },
+    voltageFrom: 'meter-at-module',
+    limits: { voltage: 60, current: 8, power: 120 },
+  });
+});
+
+it('what is really there is read, with its defaults', () => {
+  expect(parseBench(whole, 'bench.yaml').simulation).toEqual({
+    seed: 7,
+    circuit: 'parallel',
+    leads: 0.035,
+    modules: [
+      {
+        name: 'K1',
+        openCircuitVoltage: 15.21,
+        droopResistance: 0.018,
+        limit: { style: 'hiccup', current: 5.3, period: 0.8 },
+        unsteadyAbove: 5.1,
+        noise: 0.001,
+        ballast: 0.05,
+        reverseDiode: true,
+        earth: 'bonded',
+        thermal: { riseAtRated: 35, timeConstant: 720, ambient: 23, limitPerKelvin: -0.002 },
+      },
+      {
+        name: 'K2',
+        openCircuitVoltage: 15.08,
+        droopResistance: 0.021,
+        // 30 % of the limit, as it did not say.
+        limit: { style: 'foldback', current: 5, shortCircuit: 1.5 },
+        noise: 0,
+        ballast: 0,
+        reverseDiode: false,
+        earth: 'isolated',
+      },
+    ],
+    instruments: {},
+    answers: {},
+    faults: [],
+  });
+});
+
+it('everything that may be written is read', () => {
+  const text = changed(
+    'faults: []',
+    `instruments:
+    load:
+      errors: { voltage: { gain: 0.05 %, offset: 2 mV, resolution: 1 mV }, temperature: { offset: 0.5 K } }
+      reading-time: 40 ms
+  answers: { temperature: 41 °C }
+  faults:
+    - { at: 30 s, what: meter-silent }`,
+  )
+    .replace('earth: bonded', 'earth: 2 kΩ')
+    .replace('120 W }', '120 W, temperature: 70 °C }')
+    .replace('current: 5 A } }', 'current: 5 A, short-circuit: 1.2 A }, rated-current: 4 A }');
+  const { simulation, limits } = parseBench(text, 'bench.yaml');
+  expect(limits.temperature).toBe(70);
+  expect(simulation?.modules[0]?.earth).toBe(2000);
+  expect(simulation?.modules[1]).toMatchObject({ limit: { shortCircuit: 1.2 }, ratedCurrent: 4 });
+  expect(simulation?.instruments).toEqual({
+    load: {
+      errors: {
+        voltage: { gain: 0.0005, offset: 0.002, resolution: 0.001 },
+        temperature: { gain: 0, offset: 0.5, resolution: 0 },
+      },
+      readingTime: 0.04,
+    },
+  });
+  expect(simulation?.answers).toEqual({ temperature: '41 °C' });
+  expect(simulation?.faults).toEqual([{ at: 30, what: 'meter-silent' }]);
+});
+
+it.each([
+  ['constant-current', { style: 'constant-current', current: 5 }],
+  ['constant-power', { style: 'constant-power', current: 5 }],
+  ['hiccup', { style: 'hiccup', current: 5, period: 0.8 }],
+  ['latch-off', { style: 'latch-off', current: 5 }],
+])('a module may limit by %s', (style, limit) => {
+  const text = changed('style: foldback', `style: ${style}`);
+  expect(parseBench(text, 'bench.yaml').simulation?.modules[1]?.limit).toEqual(limit);
+});
+
+it('leads need not be known where the meter reads at the module', () => {
+  const text = benchExample.replace(/^leads:.*\n/m, '');
+  expect(parseBench(text, 'bench.yaml').leads).toEqual({ resistance: 0, uncertainty: 0 });
+});
+
+describe('one mistake is one line, at its place', () => {
+  it.each<[string, string, string]>([
+    [
+      'tcp://127.0.0.1:5025',
+      'tcp://127.0.0.1',
+      "4:49: instruments.load.connection: 'tcp://127.0.0.1' lacks its port: tcp://127.0.0.1:5025",
+    ],
+    [
+      '"tcp://127.0.0.1:5025"',
+      '5025',
+      '4:49: instruments.load.connection: found the number 5025; an address is needed: tcp://127.0.0.1:5025',
+    ],
+    [
+      ', connection: "tcp://127.0.0.1:5025"',
+      '',
+      '4:10: instruments.load.connection: missing; an address is needed: tcp://127.0.0.1:5025',
+    ],
+    ['  meter: {', '  metre: {', "5:3: instruments: unknown key 'metre'; did you mean 'meter'?"],
+    [
+      'style: hiccup',
+      'style: hickup',
+      "17:39: simulation.modules.0.limit.style: found 'hickup'; did you mean 'hiccup'?",
+    ],
+    [
+      'style: hiccup, ',
+      '',
+      '17:14: simulation.modules.0.limit.style: missing; one of constant-current, foldback, constant-power, hiccup, latch-off is needed',
+    ],
+    [
+      'period: 800 ms',
+      'perod: 800 ms',
+      "17:47: simulation.modules.0.limit: unknown key 'perod'; did you mean 'period'?",
+    ],
+    [
+      'earth: bonded',
+      'earth: bondd',
+      "22:14: simulation.modules.0.earth: found 'bondd'; did you mean 'bonded'?",
+    ],
+    [
+      'reverse-diode: true',
+      'reverse-diode: yes',
+      "21:22: simulation.modules.0.reverse-diode: found 'yes'; true or false is needed",
+    ],
+    ['seed: 7', 'seed: 7.5', '10:9: simulation.seed: found the number 7.5; a whole number is needed'],
+    ['seed: 7', 'seed: -7', '10:9: simulation.seed: found the number -7; at least 0 is needed'],
+    [
+      'circuit: parallel',
+      'circuit: single',
+      '14:5: simulation.modules: a single circuit has exactly one module; found 2',
+    ],
+    ['name: K2', 'name: K1', "24:15: simulation.modules.1.name: a second module is called 'K1'"],
+    [
+      'current: 5 A }',
+      'current: 5 A, short-circuit: 6 A }',
+      '24:130: simulation.modules.1.limit.short-circuit: a module that folds back gives less into a short than at its limit',
+    ],
+    [
+      'faults: []',
+      'faults: [{ at: 3 s, what: meter-silnt }]',
+      "25:29: simulation.faults.0.what: found 'meter-silnt'; did you mean 'meter-silent'?",
+    ],
+    [
+      'faults: []',
+      'instruments: { scanner: {} }',
+      '25:27: simulation.instruments.scanner: there is no scanner among the instruments of this bench',
+    ],
+    [
+      'faults: []',
+      'instruments: { load: { errors: { voltage: { offset: 2 mA } } } }',
+      "25:55: simulation.instruments.load.errors.voltage.offset: found '2 mA', which is a current; a voltage is needed: 15 V, 200 mV",
+    ],
+    [
+      'faults: []',
+      'answers: { temperature: 41 }',
+      '25:27: simulation.answers.temperature: found the number 41; a text is needed',
+    ],
+    [
+      'power: 120 W',
+      'power: 120 VA',
+      "8:47: limits.power: found '120 VA'; no unit is written 'VA'; a power is given in µW, mW, W, kW",
+    ],
+  ])('%s → %s', (find, replacement, problem) => {
+    expect(problemsOf(() => parseBench(changed(find, replacement), 'bench.yaml'))).toEqual([
+      `bench.yaml:${problem}`,
+    ]);
+  });
+
+  it('a meter at the module that is not there', () => {
+    const text = benchExample.replace(/^ {2}meter:.*\n/m, '');
+    expect(problemsOf(() => parseBench(text, 'bench.yaml'))).toEqual([
+      'bench.yaml:6:15: voltage-from: meter-at-module needs a meter among the instruments',
+    ]);
+  });
+
+  it('leads that must be known', () => {
+    const text = benchExample
+      .replace(/^leads:.*\n/m, '')
+      .replace('voltage-from: meter-at-module', 'voltage-from: load-terminals');
+    expect(problemsOf(() => parseBench(text, 'bench.yaml'))).toEqual([
+      'bench.yaml:1:1: leads: missing; the leads must be known when the voltage is read at the load terminals',
+    ]);
+  });
+
+  it('a simulated instrument on a bench that does not say what is there', () => {
+    const text = benchExample.replace('tcp://127.0.0.1:5025', 'simulated:');
+    expect(problemsOf(() => parseBench(text, 'bench.yaml'))).toEqual([
+      "bench.yaml:4:49: instruments.load.connection: a simulated instrument needs a 'simulation' section, which says what is really there",
+    ]);
+  });
+
+  it('one module alone in parallel', () => {
+    const text = whole.replace(/^ {4}- \{ name: K2.*\n/m, '');
+    expect(problemsOf(() => parseBench(text, 'bench.yaml'))).toEqual([
+      'bench.yaml:14:5: simulation.modules: a parallel circuit has at least two modules; found 1',
+    ]);
+  });
+});

@@ -1,0 +1,259 @@
+import { mkdir, mkdtemp, rm, writeFile } from 'node:fs/promises';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { describe, expect, it, onTestFinished } from 'vitest';
+import { parseDriver, readDriver } from '../../src/files/read-driver.js';
+import { driverExample } from './design-examples.js';
+import { problemsOf } from './problems-of.js';
+
+const changed = (find: string, replacement: string): string => {
+  expect(driverExample).toContain(find);
+  return driverExample.replace(find, () => replacement);
+};
+const errorQueue = String.raw`{ ask: "SYST:ERR?", clear: "^[+-]?0\\b" }`;
+
+it('the example of the design is read', () => {
+  expect(parseDriver(driverExample, 'load.yaml')).toEqual({
+    name: 'load-input-scpi',
+    role: 'load',
+    summary: 'Electronic loads that answer INPut, CURRent and MEASure',
+    wire: { sendEnd: '\n', replyEnd: '\n', gap: 0, timeout: 1 },
+    identify: '*IDN?',
+    errors: { ask: 'SYST:ERR?', clear: /^[+-]?0\b/ },
+    prepare: ['*CLS'],
+    release: [],
+    operations: {
+      'make-safe': ['INP OFF'],
+      'input-on': ['INP ON'],
+      'input-off': ['INP OFF'],
+      'current-mode': ['FUNC CURR'],
+      'voltage-mode': ['FUNC VOLT'],
+      'set-current': ['CURR {amps}'],
+      'set-voltage': ['VOLT {volts}'],
+      'protect-current': ['CURR:PROT {amps}'],
+    },
+    readings: {
+      voltage: { kind: 'number', ask: ['MEAS:VOLT?'], dimension: 'voltage' },
+      current: { kind: 'number', ask: ['MEAS:CURR?'], dimension: 'current' },
+      'input-state': { kind: 'flag', ask: ['INP?'], trueWhen: /^(1|ON)$/ },
+    },
+    settling: 0.02,
+    ratings: { voltage: 150, current: 40, power: 200, leastVoltage: 1 },
+    accuracy: { voltage: { ofReading: 0.001, fixed: 0.01 }, current: { ofReading: 0.002, fixed: 0.01 } },
+  });
+});
+
+it('a meter that is spoken to simply needs little', () => {
+  const text = [
+    'railproof: driver 1',
+    'name: meter-plain',
+    'role: meter',
+    'summary: Meters that answer READ?',
+    'identify: "*IDN?"',
+    'errors: none',
+    'operations: { make-safe: [] }',
+    'readings:',
+    '  voltage: { ask: [CONF, "READ?"], unit: V, pattern: "VOLT (?<value>.*)" }',
+    'identity: "^METER"',
+    'accuracy: { voltage: { of-reading: 0.02 %, fixed: 1 mV, resolution: 0.1 mV } }',
+  ].join('\n');
+  expect(parseDriver(text, 'meter.yaml')).toEqual({
+    name: 'meter-plain',
+    role: 'meter',
+    summary: 'Meters that answer READ?',
+    wire: { sendEnd: '\n', replyEnd: '\n', gap: 0, timeout: 1 },
+    identify: '*IDN?',
+    identity: /^METER/,
+    errors: 'none',
+    prepare: [],
+    release: [],
+    operations: { 'make-safe': [] },
+    readings: {
+      voltage: { kind: 'number', ask: ['CONF', 'READ?'], dimension: 'voltage', pattern: /VOLT (?<value>.*)/ },
+    },
+    settling: 0,
+    ratings: {},
+    accuracy: { voltage: { ofReading: 0.0002, fixed: 0.001, resolution: 0.0001 } },
+  });
+});
+
+describe('one mistake is one line, at its place', () => {
+  it.each<[string, string, string]>([
+    ['input-on:', 'inputon:', "12:3: operations: unknown key 'inputon'; did you mean 'input-on'?"],
+    ['  make-safe:    ["INP OFF"]\n', '', '11:3: operations.make-safe: missing; a load needs this operation'],
+    [
+      'make-safe:    ["INP OFF"]',
+      'make-safe: []',
+      '11:14: operations.make-safe: at least one message is needed',
+    ],
+    [
+      'set-voltage: ',
+      'measure-voltage: [X]\n  set-voltage: ',
+      "17:20: operations.measure-voltage: a load has no operation 'measure-voltage'; it has make-safe, input-on, input-off, current-mode, set-current, voltage-mode, set-voltage, protect-current, protect-voltage, protect-power",
+    ],
+    [
+      'CURR {amps}',
+      'CURR {amp}',
+      "16:18: operations.set-current.0: unknown placeholder '{amp}'; did you mean '{amps}'?",
+    ],
+    [
+      'CURR {amps}',
+      'CURR 1',
+      '16:17: operations.set-current: no message holds {amps}, which stands for the value',
+    ],
+    [
+      'VOLT {volts}',
+      'VOLT {amps}',
+      "17:18: operations.set-voltage.0: unknown placeholder '{amps}'; {volts} is known here",
+    ],
+    [
+      'INP ON',
+      'INP {on}',
+      "12:18: operations.input-on.0: unknown placeholder '{on}'; none is filled in here",
+    ],
+    ['*CLS', '*CLS {amps}', "8:11: prepare.0: unknown placeholder '{amps}'; none is filled in here"],
+    [
+      'MEAS:VOLT?',
+      'MEAS:VOLT? {x}',
+      "20:19: readings.voltage.ask: unknown placeholder '{x}'; none is filled in here",
+    ],
+    ['"MEAS:VOLT?"', '[MEAS, 3]', '20:26: readings.voltage.ask.1: found the number 3; a text is needed'],
+    [
+      '"MEAS:VOLT?"',
+      '{ a: 1 }',
+      '20:19: readings.voltage.ask: found a map; a message, or a list of messages, is needed',
+    ],
+    ['"MEAS:VOLT?"', '[]', '20:19: readings.voltage.ask: found 0 of them; at least 1 are needed'],
+    [
+      'unit: V ',
+      'unit: A ',
+      '20:39: readings.voltage.unit: the unit is that of a current; this reading is a voltage',
+    ],
+    [
+      'unit: V ',
+      'unit: mV ',
+      "20:39: readings.voltage.unit: found 'mV'; a unit without a prefix is needed: V, A, W, Ohm, °C",
+    ],
+    [
+      'unit: V ',
+      'unit: Volt ',
+      "20:39: readings.voltage.unit: found 'Volt'; a unit without a prefix is needed: V, A, W, Ohm, °C",
+    ],
+    [
+      ', unit: V ',
+      ' ',
+      "20:12: readings.voltage: a reading has either a 'unit', when it is a number, or 'true-when', when it is a yes or a no",
+    ],
+    [
+      ', unit: V ',
+      ', true-when: "1" ',
+      "20:12: readings.voltage: the voltage is a number; give its 'unit' in place of 'true-when'",
+    ],
+    [
+      'true-when: "^(1|ON)$"',
+      'unit: V',
+      "22:16: readings.input-state: the input-state is a yes or a no; give 'true-when' in place of 'unit'",
+    ],
+    [
+      'true-when: "^(1|ON)$"',
+      'true-when: 1',
+      '22:42: readings.input-state.true-when: found the number 1; a regular expression, as a text in quotes, is needed',
+    ],
+    [
+      'true-when: "^(1|ON)$"',
+      'true-when: "^(1|ON$"',
+      "22:42: readings.input-state.true-when: '^(1|ON$' is no regular expression: unterminated group",
+    ],
+    [
+      'true-when: "^(1|ON)$"',
+      `true-when: "${'x'.repeat(201)}"`,
+      '22:42: readings.input-state.true-when: found an expression of 201 characters; at most 200 are allowed',
+    ],
+    [
+      'unit: V ',
+      'unit: V, pattern: "(.*)" ',
+      "20:51: readings.voltage.pattern: '(.*)' lacks a group named 'value': (?<value>…)",
+    ],
+    [errorQueue, 'nonee', "7:9: errors: found 'nonee'; none, or a map with 'ask' and 'clear', is needed"],
+    [errorQueue, '{ ask: "SYST:ERR?" }', '7:9: errors.clear: missing; a regular expression is needed'],
+    [
+      'release: []',
+      'release: ["A\\nB"]',
+      "9:11: release.0: found 'A\\u000aB'; a message is 1 to 200 plain ASCII characters on one line",
+    ],
+    [
+      'release: []',
+      'release: ["Ω"]',
+      "9:11: release.0: found 'Ω'; a message is 1 to 200 plain ASCII characters on one line",
+    ],
+    [
+      'send-end: "\\n"',
+      'send-end: ""',
+      '5:19: wire.send-end: found \'\'; 1 to 4 ASCII characters are needed, as in "\\n" or "\\r\\n"',
+    ],
+    ['timeout: 1 s', 'timeout: 0 s', "5:62: wire.timeout: found '0 s'; more than 0 s is needed"],
+    ['role: load', 'role: laod', "3:7: role: found 'laod'; did you mean 'load'?"],
+    [
+      '  current: { of-reading',
+      '  power: { fixed: 1 W, of-reading: 1 % }\n  current: { of-reading',
+      "27:10: accuracy.power: this driver has no reading 'power'",
+    ],
+    [
+      'of-reading: 0.1 %',
+      'of-reading: 0.1',
+      '26:26: accuracy.voltage.of-reading: found the bare number 0.1; a ratio needs its unit: 80 %, 0.5 %',
+    ],
+  ])('%s → %s', (find, replacement, problem) => {
+    expect(problemsOf(() => parseDriver(changed(find, replacement), 'd.yaml'))).toEqual([
+      `d.yaml:${problem}`,
+    ]);
+  });
+});
+
+describe('a driver is found by name or by path', () => {
+  const shelves = async (): Promise<{ relativeTo: string; shipped: string }> => {
+    const folder = await mkdtemp(join(tmpdir(), 'railproof-drivers-'));
+    onTestFinished(() => rm(folder, { recursive: true }));
+    const shipped = join(folder, 'shipped');
+    await mkdir(shipped);
+    await writeFile(join(shipped, 'load-input-scpi.yaml'), driverExample);
+    await writeFile(join(shipped, 'README.md'), 'About the drivers.');
+    await writeFile(join(folder, 'mine.yaml'), driverExample.replace('name: load-input-scpi', 'name: mine'));
+    return { relativeTo: folder, shipped };
+  };
+
+  it('a bare name is that of a shipped one', async () => {
+    const places = await shelves();
+    const { value, path } = await readDriver('load-input-scpi', places);
+    expect(value.name).toBe('load-input-scpi');
+    expect(path).toBe(join(places.shipped, 'load-input-scpi.yaml'));
+  });
+
+  it.each(['mine.yaml', './mine.yaml', 'shipped/../mine.yaml'])(
+    '%s is a path from where the bench file is',
+    async (path) => {
+      expect((await readDriver(path, await shelves())).value.name).toBe('mine');
+    },
+  );
+
+  it('an absolute path is one', async () => {
+    const places = await shelves();
+    expect((await readDriver(join(places.relativeTo, 'mine.yaml'), places)).value.name).toBe('mine');
+  });
+
+  it('a misspelt name is told with the right one, and how to give a driver of one’s own', async () => {
+    await expect(readDriver('load-imput-scpi', await shelves())).rejects.toMatchObject({
+      code: 'NOT_SHIPPED',
+      exitCode: 66,
+      message: "no driver is called 'load-imput-scpi'; did you mean 'load-input-scpi'?",
+      advice: 'A driver of your own is given as a path: ./load-imput-scpi.yaml.',
+    });
+    await expect(readDriver('mine', await shelves())).rejects.toMatchObject({
+      message: "no driver is called 'mine'; there are load-input-scpi",
+    });
+  });
+
+  it('a path that leads nowhere is a missing file', async () => {
+    await expect(readDriver('./other.yaml', await shelves())).rejects.toMatchObject({ code: 'MISSING_FILE' });
+  });
+});
