@@ -5,6 +5,9 @@ import { randomFrom } from '../../src/simulation/random.js';
 
 const styles = ['constant-current', 'foldback', 'constant-power', 'hiccup', 'latch-off'] as const;
 
+const load = { driver: 'load-input-scpi', connection: { kind: 'simulated' } } as const;
+const meter = { driver: 'meter-read-scpi', connection: { kind: 'simulated' } } as const;
+
 export interface RandomCase {
   readonly bench: Bench;
   readonly module: Module;
@@ -41,17 +44,15 @@ export function randomCase(seed: number): RandomCase {
     },
     bench: {
       name: 'bench-of-many',
-      instruments: {
-        load: { driver: 'load-input-scpi', connection: { kind: 'simulated' } },
-        meter: { driver: 'meter-read-scpi', connection: { kind: 'simulated' } },
-      },
+      // Every fourth bench has no meter, so the leads count and are corrected for.
+      instruments: seed % 4 === 0 ? { load } : { load, meter },
       leads: { resistance: 0.035, uncertainty: 0.005 },
-      voltageFrom: 'meter-at-module',
+      voltageFrom: seed % 4 === 0 ? 'load-terminals' : 'meter-at-module',
       limits: { voltage: 60, current: 12, power: 300 },
       simulation: {
         seed,
         circuit: 'single',
-        leads: between(0.02, 0.05),
+        leads: between(0.03, 0.04),
         modules: [truth],
         instruments: {},
         answers: {},
