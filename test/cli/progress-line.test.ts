@@ -1,0 +1,56 @@
+import { PassThrough } from 'node:stream';
+import { describe, expect, it } from 'vitest';
+import { loadPlan } from '../../src/cli/load-plan.js';
+import { ProgressLine } from '../../src/cli/progress-line.js';
+import { VirtualClock } from '../../src/clock/virtual-clock.js';
+
+const { plan } = await loadPlan({
+  procedure: 'real-limit',
+  bench: 'fixtures/benches/nursery.yaml',
+  modules: ['fixtures/modules/K1.yaml'],
+});
+
+function lineOn(terminal: boolean): { progress: ProgressLine; clock: VirtualClock; text: () => string } {
+  const stream = Object.assign(new PassThrough({ encoding: 'utf8' }), { isTTY: terminal, columns: 120 });
+  const clock = new VirtualClock(new Date(0));
+  return {
+    progress: new ProgressLine(stream as unknown as NodeJS.WriteStream, plan, clock),
+    clock,
+    text: () => String(stream.read() ?? ''),
+  };
+}
+
+describe('the progress of a run', () => {
+  it('is one line that changes in place: step, set-point, readings, time gone and left', async () => {
+    const { progress, clock, text } = lineOn(true);
+    progress.stepBegan(2, 'load-ramp', '21 points from 0 A to 4 A');
+    await clock.sleep(7);
+    progress.progress(2, { setCurrent: 1.2, voltage: 15.1884, current: 1.1993 });
+    const shown = text();
+    expect(shown).toContain('step 2 of 3: load-ramp, 21 points from 0 A to 4 A\n');
+    expect(shown).toContain('2/3   set 1.200 A   15.19 V   1.199 A   18.22 W   0:07 gone, about 0:36 left');
+    expect(shown.split('\n')).toHaveLength(2);
+  });
+
+  it('never breaks the line of a narrow terminal', async () => {
+    const { progress, text } = lineOn(true);
+    progress.progress(1, { voltage: 15.2, current: 0, note: 'x'.repeat(300) });
+    const drawn = text().split('\u001b[2K').at(-1) ?? '';
+    expect(drawn.length).toBeLessThan(120);
+    await Promise.resolve();
+  });
+
+  it('is a plain line a step where there is no terminal', () => {
+    const { progress, text } = lineOn(false);
+    progress.stepBegan(1, 'open-circuit', 'reads the idle module for 5 s');
+    progress.progress(1, { voltage: 15.2, current: 0 });
+    progress.clear();
+    expect(text()).toBe('step 1 of 3: open-circuit, reads the idle module for 5 s\n');
+  });
+
+  it('says so when an instrument has no reading', () => {
+    const { progress, text } = lineOn(true);
+    progress.progress(1, { voltage: Number.NaN, current: 0 });
+    expect(text()).toContain('no reading');
+  });
+});
