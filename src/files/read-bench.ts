@@ -1,4 +1,5 @@
-import type { Bench } from './bench.js';
+import { dirname, isAbsolute, join } from 'node:path';
+import type { Bench, InstrumentPlace } from './bench.js';
 import { benchSchema } from './bench-schema.js';
 import { parseFile } from './parse-file.js';
 import { readAndParse, type FileRead } from './read-text.js';
@@ -8,7 +9,24 @@ export function parseBench(text: string, fileName: string): Bench {
   return parseFile('bench', benchSchema, text, fileName);
 }
 
-/** @throws BadFileError, MissingFileError */
+/**
+ * Reads a bench; the file of a replayed dialogue is looked for beside it, as its drivers are.
+ * @throws BadFileError, MissingFileError
+ */
 export function readBench(path: string): Promise<FileRead<Bench>> {
-  return readAndParse(path, parseBench);
+  return readAndParse(path, (text, fileName) => besideBench(parseBench(text, fileName), dirname(path)));
+}
+
+function besideBench(bench: Bench, folder: string): Bench {
+  const instruments = Object.entries(bench.instruments).map(([role, place]) => [
+    role,
+    inFolder(place, folder),
+  ]);
+  return { ...bench, instruments: Object.fromEntries(instruments) as Bench['instruments'] };
+}
+
+function inFolder(place: InstrumentPlace, folder: string): InstrumentPlace {
+  const { connection } = place;
+  if (connection.kind !== 'replay' || isAbsolute(connection.file)) return place;
+  return { ...place, connection: { kind: 'replay', file: join(folder, connection.file) } };
 }
