@@ -1,46 +1,91 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Volts } from '../quantity/quantity.js';
 import { median } from '../statistics/checked.js';
+import { fUpperTail } from '../statistics/f-distribution.js';
 import { rectangular } from '../statistics/uncertainty-budget.js';
 import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
 import { moduleVoltageErrors, promised, promisedErrors } from './promised-errors.js';
 
-/** Where the output begins to swing: between the last steady current and the first unsteady one. */
+/** Where the output begins to swing: between the last clearly steady current and the first clearly unsteady one. */
 export interface Edge {
   readonly steady: Amperes;
   readonly unsteady: Amperes;
 }
 
-/** A spread this many times the usual one is no chance: with five readings, less than once in a million. */
-const unsteadyRatio = 4;
+/** How many times the usual spread is unsteady; with five readings chance does that once in ten thousand. */
+const unsteadyRatio = 3;
+/** With two or three readings at a point chance does it more often, and then it takes more than the ratio. */
+const strictLevel = 1e-4;
+/** What scatters more than this is not clearly steady: a swing may have begun that the meter half hides. */
+const steadyRatio = 2;
+
+interface Spread {
+  readonly current: Amperes;
+  readonly deviation: Volts;
+  readonly degreesOfFreedom: number;
+}
 
 /**
- * Looks for the current from which on the readings scatter. The usual spread is the median over the
- * points in the lower half of the currents, and never less than the meter's last digit. The edge is the
- * lowest unsteady point above which at least half of the points are unsteady too, so that one disturbed
- * reading in the middle of a ramp is not taken for an oscillation.
+ * Looks for the current from which on the readings scatter. The edge is where the fewest points are on the
+ * wrong side: unsteady ones below, steady ones above. So one disturbed reading in the middle of a ramp is
+ * not taken for an oscillation, and does not hide one either.
  * @param points held ones, by rising current.
  */
 export function findEdge(points: readonly CurvePoint[], resolution: Volts): Edge | undefined {
-  const spread = points.flatMap(({ current, deviation }) =>
-    deviation === undefined ? [] : [{ current, deviation }],
+  const spreads = points.flatMap(({ current, deviation, readings }) =>
+    deviation === undefined ? [] : [{ current, deviation, degreesOfFreedom: readings - 1 }],
   );
-  const lower = spread.slice(0, Math.ceil(spread.length / 2)).map((point) => point.deviation);
-  if (lower.length < 2) return undefined;
-  const usual = Math.max(median(lower), resolution);
-  const unsteady = spread.map((point) => point.deviation > unsteadyRatio * usual);
-  const first = unsteady.findIndex((is, index) => is && isMostly(unsteady.slice(index)));
-  const above = spread[first];
-  const below = spread[first - 1];
-  return above === undefined || below === undefined
-    ? undefined
-    : { steady: below.current, unsteady: above.current };
+  const usual = usualSpread(spreads, resolution);
+  if (usual === undefined) return undefined;
+  const first = fewestOnTheWrongSide(spreads.map((spread) => isUnsteady(spread, usual)));
+  const above = spreads[first];
+  if (above === undefined) return undefined;
+  const below = spreads.slice(0, first);
+  const calm = below.findLast((spread) => spread.deviation <= steadyRatio * usual.deviation) ?? below[0];
+  return calm === undefined ? undefined : { steady: calm.current, unsteady: above.current };
 }
 
-function isMostly(flags: readonly boolean[]): boolean {
-  return flags.filter(Boolean).length * 2 >= flags.length;
+/**
+ * The median spread at low currents, and never less than the meter's last digit. Of the lower half of the
+ * points, of the lower half and of the lower quarter of the currents the calmest counts: a search crowds
+ * its points near the limit, and a module may be restless at light load only.
+ */
+function usualSpread(spreads: readonly Spread[], resolution: Volts): Spread | undefined {
+  const lowest = spreads.at(0)?.current ?? Number.NaN;
+  const highest = spreads.at(-1)?.current ?? Number.NaN;
+  const upTo = (share: number): readonly Spread[] =>
+    spreads.filter((spread) => spread.current <= lowest + share * (highest - lowest));
+  return [spreads.slice(0, Math.ceil(spreads.length / 2)), upTo(0.5), upTo(0.25)]
+    .filter((band) => band.length >= 2)
+    .map((band) => ({
+      current: lowest,
+      deviation: Math.max(median(band.map((spread) => spread.deviation)), resolution),
+      degreesOfFreedom: band.reduce((sum, spread) => sum + spread.degreesOfFreedom, 0),
+    }))
+    .sort((one, other) => one.deviation - other.deviation)
+    .at(0);
+}
+
+function isUnsteady({ deviation, degreesOfFreedom }: Spread, usual: Spread): boolean {
+  if (deviation <= unsteadyRatio * usual.deviation) return false;
+  const ratio = (deviation / usual.deviation) ** 2;
+  return fUpperTail(ratio, degreesOfFreedom, usual.degreesOfFreedom) < strictLevel;
+}
+
+/** Where to cut, from the second place on; the length where no cut is better than none. Of equals the lowest. */
+function fewestOnTheWrongSide(unsteady: readonly boolean[]): number {
+  let fewest = unsteady.filter((is) => is).length;
+  let cut = unsteady.length;
+  let wrong = unsteady.length - fewest;
+  unsteady.forEach((is, index) => {
+    wrong += is ? 1 : -1;
+    if (wrong >= fewest) return;
+    fewest = wrong;
+    cut = index + 1;
+  });
+  return cut;
 }
 
 /** `unsteady-above-current`: the middle of the edge, rectangular between its ends. */
@@ -64,6 +109,7 @@ export function steadinessFindings(evidence: Evidence, points: readonly CurvePoi
         ),
         promised(`${current.of}, gain`, current.gain * value),
         promised(`${current.of}, offset`, current.offset),
+        promised(`${current.of}, resolution`, current.resolution),
       ],
       { step: points.find((point) => point.current === edge.unsteady)?.step ?? null, note },
     ),
