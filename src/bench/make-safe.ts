@@ -1,4 +1,3 @@
-import { RailproofError } from '../errors/railproof-error.js';
 import type { OpenBench } from './open-bench.js';
 
 export type Safety =
@@ -6,29 +5,36 @@ export type Safety =
   /** Nobody could read back that the load is off; `advice` is for the person at the bench. */
   | { readonly kind: 'unconfirmed'; readonly why: string; readonly advice: string };
 
-const attempts = 3;
+/** Before each further attempt: at once, then after the time an adapter takes to come back. */
+const pauses = [0, 1];
 
 /**
- * Puts the load off and reads it back: first on the open connection, then on a fresh one.
- * Never rejects: whatever happens comes back as words.
+ * Puts the load off and reads it back: first on the open connection, then on fresh ones. Nobody who listens
+ * can stop it. Never rejects: whatever happens comes back as words.
  */
-export async function makeSafe(bench: OpenBench): Promise<Safety> {
-  let why = '';
-  let load = bench.load;
-  for (let attempt = 1; attempt <= attempts; attempt += 1) {
-    try {
-      if (attempt > 1) load = await bench.reopenLoad();
-      await load.makeSafe();
-      return { kind: 'confirmed' };
-    } catch (error) {
-      why = error instanceof RailproofError ? error.message : String(error);
+export function makeSafe(bench: OpenBench): Promise<Safety> {
+  return bench.regardless(async () => {
+    let failure = await failureOf(() => bench.load.makeSafe());
+    for (const pause of pauses) {
+      if (failure === undefined) break;
+      failure = await failureOf(async () => {
+        const load = await bench.reopenLoad(pause);
+        await load.makeSafe();
+      });
     }
-  }
-  return {
-    kind: 'unconfirmed',
-    why,
-    advice:
-      'THE LOAD MAY STILL BE ON. Switch its input off at its front panel, or unplug the module, ' +
-      'before you touch the leads.',
-  };
+    return failure === undefined ? { kind: 'confirmed' } : { kind: 'unconfirmed', why: failure, advice };
+  });
 }
+
+async function failureOf(attempt: () => Promise<void>): Promise<string | undefined> {
+  try {
+    await attempt();
+    return undefined;
+  } catch (error) {
+    return error instanceof Error ? error.message : String(error);
+  }
+}
+
+const advice =
+  'THE LOAD MAY STILL BE ON. Switch its input off at its front panel, or unplug the module, ' +
+  'before you touch the leads.';

@@ -3,6 +3,8 @@ import type { Bench } from '../files/bench.js';
 import type { Driver, Role } from '../files/driver.js';
 import type { Connect } from '../instrument/connect.js';
 import { Instrument } from '../instrument/instrument.js';
+import type { Seconds } from '../quantity/quantity.js';
+import { Audience } from './audience.js';
 import { type Ceilings, ceilingsOf } from './ceilings.js';
 import { type InputListener, Load } from './load.js';
 import type { Taken } from './sample.js';
@@ -20,13 +22,16 @@ export interface BenchParts {
 export interface OpenBench {
   readonly description: Bench;
   readonly ceilings: Ceilings;
+  /** The one that was opened last. */
   readonly load: Load;
   readonly meter: Instrument | undefined;
   readonly instruments: readonly Instrument[];
   /** Reads everything there is to read at one moment. */
   sample(): Promise<readonly Taken[]>;
-  /** Opens the load's connection again after it was lost, and hands over a load that answers. */
-  reopenLoad(): Promise<Load>;
+  /** Closes the load's connection and, after a pause, opens it again; hands over a load that answers. */
+  reopenLoad(pause: Seconds): Promise<Load>;
+  /** Does something that no listener can stop: a journal on a full disk must not keep the load on. */
+  regardless<T>(work: () => Promise<T>): Promise<T>;
   /** Sends each instrument its parting messages and closes all connections. Never rejects. */
   close(): Promise<void>;
 }
@@ -36,35 +41,39 @@ export interface OpenBench {
  * Nothing is switched on.
  */
 export async function openBench(parts: BenchParts): Promise<OpenBench> {
-  const { bench, drivers } = parts;
-  const ceilings = ceilingsOf(bench, drivers);
-  const opened: Instrument[] = [];
+  const audience = new Audience(parts.onInput, parts.onNotice);
+  const load = await openInstrument(parts, audience, 'load', parts.drivers.load);
   try {
-    const loadInstrument = await openInstrument(parts, 'load', drivers.load);
-    opened.push(loadInstrument);
-    const meter = drivers.meter && (await openInstrument(parts, 'meter', drivers.meter));
-    if (meter) opened.push(meter);
-    return assemble(parts, ceilings, loadInstrument, meter);
+    const meter =
+      parts.drivers.meter && (await openInstrument(parts, audience, 'meter', parts.drivers.meter));
+    return assemble(parts, audience, load, meter);
   } catch (error) {
-    for (const instrument of opened) await instrument.close();
+    await load.close();
     throw error;
   }
 }
 
 function assemble(
   parts: BenchParts,
-  ceilings: Ceilings,
+  audience: Audience,
   first: Instrument,
   meter: Instrument | undefined,
 ): OpenBench {
-  const load = new Load(first, ceilings, parts.onInput);
-  const instruments = meter === undefined ? [first] : [first, meter];
+  const ceilings = ceilingsOf(parts.bench, parts.drivers);
+  let load = new Load(first, ceilings, audience.input);
+  const instruments = (): readonly Instrument[] =>
+    meter === undefined ? [load.instrument] : [load.instrument, meter];
+  const regardless = <T>(work: () => Promise<T>): Promise<T> => audience.regardless(work);
   return {
     description: parts.bench,
     ceilings,
-    load,
+    get load() {
+      return load;
+    },
     meter,
-    instruments,
+    get instruments() {
+      return instruments();
+    },
     async sample() {
       const taken: Taken[] = [];
       if (meter) taken.push({ of: 'meter', what: 'voltage', measurement: await meter.read('voltage') });
@@ -72,29 +81,36 @@ function assemble(
       taken.push({ of: 'load', what: 'current', measurement: await load.readCurrent() });
       return taken;
     },
-    async reopenLoad() {
-      await first.close();
-      const again = await openInstrument(parts, 'load', parts.drivers.load);
-      instruments.push(again);
-      return new Load(again, ceilings, parts.onInput);
+    async reopenLoad(pause) {
+      await load.instrument.close();
+      await parts.clock.sleep(pause);
+      load = new Load(
+        await openInstrument(parts, audience, 'load', parts.drivers.load),
+        ceilings,
+        audience.input,
+      );
+      return load;
     },
-    async close() {
-      for (const instrument of instruments) {
-        await instrument.release().catch(() => undefined);
-        await instrument.close();
-      }
-    },
+    regardless,
+    close: () =>
+      regardless(async () => {
+        for (const instrument of instruments()) {
+          await instrument.release().catch(() => undefined);
+          await instrument.close();
+        }
+      }),
   };
 }
 
-async function openInstrument(parts: BenchParts, role: Role, driver: Driver): Promise<Instrument> {
-  const place = parts.bench.instruments[role];
+async function openInstrument(
+  { bench, connect, clock }: BenchParts,
+  { notice }: Audience,
+  role: Role,
+  driver: Driver,
+): Promise<Instrument> {
+  const place = bench.instruments[role];
   if (place === undefined) throw new Error(`the bench has no ${role}`);
-  const connection = await parts.connect(place.connection, driver, role);
-  try {
-    return await Instrument.open({ role, driver, connection, clock: parts.clock, onNotice: parts.onNotice });
-  } catch (error) {
-    await connection.close();
-    throw error;
-  }
+  const connection = await connect(place.connection, driver, role);
+  // When this fails it has closed the connection.
+  return Instrument.open({ role, driver, connection, clock, onNotice: notice });
 }
