@@ -17,6 +17,12 @@ export interface Ceiling {
   readonly setBy: string;
 }
 
+/**
+ * What flows may be a tenth above the ceiling: the set-point is kept below it, so more than that is no
+ * longer the load's own error but a fault.
+ */
+export const overCurrentFactor = 1.1;
+
 /** The strictest of the bench's limits and the ratings of the instruments that carry the quantity. */
 export function ceilingsOf(
   bench: Bench,

@@ -1,7 +1,7 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import { GuardTrippedError } from './bench-error.js';
-import type { Ceilings } from './ceilings.js';
+import { type Ceilings, overCurrentFactor } from './ceilings.js';
 import type { Taken } from './sample.js';
 
 export interface GuardLimits extends Ceilings {
@@ -45,9 +45,6 @@ function guardVoltage(of: string, volts: number, limits: GuardLimits): void {
     );
   }
 }
-
-/** A tenth above the ceiling: the set-point is kept below it, so more than a load's own error is a fault. */
-const overCurrentFactor = 1.1;
 
 function guardCurrent(of: string, amps: number, limits: GuardLimits): void {
   if (amps <= limits.current.value * overCurrentFactor) return;

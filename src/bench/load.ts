@@ -3,7 +3,7 @@ import type { Measurement } from '../instrument/scpi-number.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes } from '../quantity/quantity.js';
 import { BeyondCeilingError, DisobeyedError } from './bench-error.js';
-import type { Ceilings } from './ceilings.js';
+import { type Ceilings, overCurrentFactor } from './ceilings.js';
 
 export type InputState = 'on' | 'off';
 
@@ -27,7 +27,7 @@ export class Load {
     await this.instrument.perform('current-mode');
     await this.setCurrent(0);
     if (this.instrument.has('protect-current')) {
-      await this.instrument.perform('protect-current', { amps: this.#ceilings.current.value });
+      await this.instrument.perform('protect-current', { amps: this.#mostCurrent() });
     }
     if (this.instrument.has('protect-voltage')) {
       await this.instrument.perform('protect-voltage', { volts: this.#ceilings.voltage.value });
@@ -71,6 +71,15 @@ export class Load {
     const confirmed = !(await this.isOn());
     this.#onInput('off', confirmed);
     if (!confirmed) throw new DisobeyedError(this.address, 'was made safe and says that its input is on');
+  }
+
+  /**
+   * A load whose own error carries it over the ceiling must not switch itself off there, as that would be
+   * taken for a dropout of the module.
+   */
+  #mostCurrent(): Amperes {
+    const rated = this.instrument.driver.ratings.current ?? Number.POSITIVE_INFINITY;
+    return Math.min(this.#ceilings.current.value * overCurrentFactor, rated);
   }
 
   isOn(): Promise<boolean> {
