@@ -1,4 +1,5 @@
 import type { Instrument } from '../instrument/instrument.js';
+import { InstrumentComplainedError } from '../instrument/instrument-errors.js';
 import type { Measurement } from '../instrument/scpi-number.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes } from '../quantity/quantity.js';
@@ -65,9 +66,15 @@ export class Load {
       throw new DisobeyedError(this.address, 'was told to switch its input off and says that it is on');
   }
 
-  /** Off by the driver's make-safe messages, whatever state the load was in; read back. */
+  /**
+   * Off by the driver's make-safe messages, whatever state the load was in; read back. A load that complains
+   * may be off all the same, so what it says of its input decides.
+   * @throws DisobeyedError when the load says that its input is still on.
+   */
   async makeSafe(): Promise<void> {
-    await this.instrument.perform('make-safe');
+    await this.instrument.perform('make-safe').catch((error: unknown) => {
+      if (!(error instanceof InstrumentComplainedError)) throw error;
+    });
     const confirmed = !(await this.isOn());
     this.#onInput('off', confirmed);
     if (!confirmed) throw new DisobeyedError(this.address, 'was made safe and says that its input is on');
