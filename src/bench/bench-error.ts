@@ -16,9 +16,12 @@ export class GuardTrippedError extends RailproofError {
 export class PreFlightError extends RailproofError {
   readonly code = 'PRE_FLIGHT';
   readonly exitCode = exitCodes.stopped;
+  /** What was found, in words. */
+  readonly what: string;
 
   constructor(what: string, advice: string) {
     super(`before anything was switched on: ${what}`, { advice });
+    this.what = what;
   }
 }
 
@@ -26,11 +29,13 @@ export class PreFlightError extends RailproofError {
 export class BeyondCeilingError extends RailproofError {
   readonly code = 'BEYOND_CEILING';
   readonly exitCode = exitCodes.stopped;
+  readonly setBy: string;
 
   constructor(asked: string, ceiling: string, setBy: string) {
     super(`${asked} was asked for and ${setBy} allows ${ceiling}`, {
       advice: 'lower what the procedure asks, or use a bench that allows it',
     });
+    this.setBy = setBy;
   }
 }
 
@@ -38,10 +43,12 @@ export class BeyondCeilingError extends RailproofError {
 export class DisobeyedError extends RailproofError {
   readonly code = 'DISOBEYED';
   readonly exitCode = exitCodes.instrument;
+  readonly address: string;
 
   constructor(address: string, what: string) {
     super(`the load at ${address} ${what}`, {
       advice: 'switch it off by hand; then `railproof drivers --try` shows which messages it understands',
     });
+    this.address = address;
   }
 }

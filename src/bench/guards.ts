@@ -18,7 +18,7 @@ export function guard(taken: readonly Taken[], limits: GuardLimits): void {
     if (measurement.kind === 'overload') {
       throw new GuardTrippedError(
         `over-${what}`,
-        `the ${of} reads ${what} overload`,
+        `the ${of} shows overload instead of a ${what}`,
         'what is connected is beyond its range: check the leads and the module',
       );
     }

@@ -9,7 +9,7 @@ export async function checkInputIsOff(bench: OpenBench): Promise<void> {
   if (!(await bench.load.isOn())) return;
   throw new PreFlightError(
     `the input of the load at ${bench.load.address} is on`,
-    'somebody else may be using it; if not, `railproof safe --bench <file>` switches it off',
+    'is somebody else using it? It is switched off on the way out; begin again when that is clear',
   );
 }
 
