@@ -1,0 +1,46 @@
+import { describe, expect, it } from 'vitest';
+import { ceilingsOf } from '../../src/bench/ceilings.js';
+import { nursery } from './nursery-bench.js';
+
+describe('what may never be exceeded on a bench', () => {
+  it("is the bench's own limit where that is the strictest", async () => {
+    const { description, drivers } = await nursery();
+    expect(ceilingsOf(description, drivers)).toEqual({
+      voltage: { value: 60, setBy: 'the bench' },
+      current: { value: 8, setBy: 'the bench' },
+      power: { value: 150, setBy: 'the bench' },
+    });
+  });
+
+  it('is what the load stands where the bench would allow more', async () => {
+    const { description, drivers } = await nursery({
+      limits: { voltage: 400, current: 100, power: 900 },
+      load: { ratings: { voltage: 80, current: 40, power: 200 } },
+    });
+    expect(ceilingsOf(description, drivers)).toEqual({
+      voltage: { value: 80, setBy: "the load's rating" },
+      current: { value: 40, setBy: "the load's rating" },
+      power: { value: 200, setBy: "the load's rating" },
+    });
+  });
+
+  it('is what the meter stands where it is at the module and stands less', async () => {
+    const { description, drivers } = await nursery({ meter: { ratings: { voltage: 30 } } });
+    expect(ceilingsOf(description, drivers).voltage).toEqual({ value: 30, setBy: "the meter's rating" });
+    expect(ceilingsOf(description, { load: drivers.load }).voltage.setBy).toBe('the bench');
+  });
+
+  it("is the bench's limit where the drivers promise nothing", async () => {
+    const { description, drivers } = await nursery({ load: { ratings: {} }, meter: { ratings: {} } });
+    expect(ceilingsOf(description, drivers)).toMatchObject({
+      voltage: { setBy: 'the bench' },
+      current: { setBy: 'the bench' },
+      power: { setBy: 'the bench' },
+    });
+  });
+
+  it('is laid to the bench where both say the same', async () => {
+    const { description, drivers } = await nursery({ limits: { current: 40 } });
+    expect(ceilingsOf(description, drivers).current).toEqual({ value: 40, setBy: 'the bench' });
+  });
+});

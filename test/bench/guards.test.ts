@@ -1,0 +1,120 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { guard, type GuardLimits, valueOf } from '../../src/bench/guards.js';
+import type { Taken } from '../../src/bench/sample.js';
+
+const limits: GuardLimits = {
+  voltage: { value: 60, setBy: 'the bench' },
+  current: { value: 8, setBy: 'the bench' },
+  power: { value: 150, setBy: "the load's rating" },
+  ratedVoltage: 15,
+};
+
+type Measurement = Taken['measurement'];
+const value = (number: number): Measurement => ({ kind: 'value', value: number });
+const overload: Measurement = { kind: 'overload' };
+const nothing: Measurement = { kind: 'not-a-number' };
+
+function sample(meter: Measurement, volts: Measurement, amps: Measurement): Taken[] {
+  return [
+    { of: 'meter', what: 'voltage', measurement: meter },
+    { of: 'load', what: 'voltage', measurement: volts },
+    { of: 'load', what: 'current', measurement: amps },
+  ];
+}
+
+describe('a guard lets pass', () => {
+  it.each([
+    ['a module at work', sample(value(15.1), value(14.96), value(4))],
+    ['a module that is off', sample(value(0), value(0), value(0))],
+    ['the last digits of an instrument below zero', sample(value(-0.003), value(-0.012), value(-0.004))],
+    ['a reading that an instrument could not give', sample(nothing, nothing, nothing)],
+    ['exactly the limits', sample(value(60), value(60), value(2.5))],
+    ["a current above the ceiling by the load's own error", sample(value(15), value(15), value(8.03))],
+  ])('%s', (_, taken) => {
+    expect(() => {
+      guard(taken, limits);
+    }).not.toThrow();
+  });
+});
+
+describe('a guard stops the run, saying what was read and who set the limit, at', () => {
+  it.each([
+    [
+      'over-voltage',
+      'over-voltage',
+      sample(value(60.4), value(15), value(0)),
+      'the meter reads 60.4 V and the bench allows 60 V',
+    ],
+    [
+      'over-voltage at the load',
+      'over-voltage',
+      sample(value(15), value(61), value(0)),
+      'the load reads 61 V and the bench allows 60 V',
+    ],
+    [
+      'reversed polarity',
+      'reversed-polarity',
+      sample(value(-15.2), value(-15.2), value(0)),
+      'the meter reads -15.2 V: the polarity is reversed',
+    ],
+    [
+      'over-current',
+      'over-current',
+      sample(value(15), value(15), value(9)),
+      'the load reads 9 A and the bench allows 8 A',
+    ],
+    [
+      'over-power',
+      'over-power',
+      sample(value(30), value(29), value(6)),
+      "the load takes 174 W and the load's rating allows 150 W",
+    ],
+    [
+      'an overload of the meter',
+      'over-voltage',
+      sample(overload, value(15), value(1)),
+      'the meter shows overload instead of a voltage',
+    ],
+    [
+      'an overload of the load',
+      'over-current',
+      sample(value(15), value(15), overload),
+      'the load shows overload instead of a current',
+    ],
+  ])('%s', (_, name, taken, message) => {
+    expect(() => {
+      guard(taken, limits);
+    }).toThrow(expect.objectContaining({ code: 'GUARD_TRIPPED', exitCode: 3, guard: name, message }));
+  });
+
+  it('any reading beyond a limit, whichever instrument it comes from', () => {
+    fc.assert(
+      fc.property(
+        fc.constantFrom(0, 1, 2),
+        fc.oneof(
+          fc.double({ min: 60.001, max: 1e6, noNaN: true }),
+          fc.double({ min: -1e6, max: -0.31, noNaN: true }),
+        ),
+        (which, far) => {
+          fc.pre(which !== 2 || far > 0);
+          const quiet = [value(15), value(15), value(1)];
+          const [meter, volts, amps] = quiet.with(which, value(far));
+          expect(() => {
+            guard(sample(meter ?? nothing, volts ?? nothing, amps ?? nothing), limits);
+          }).toThrow(expect.objectContaining({ code: 'GUARD_TRIPPED' }));
+        },
+      ),
+    );
+  });
+});
+
+describe('a value out of a sample', () => {
+  it('is not a number when it was not read, or when there was none', () => {
+    const taken = sample(value(15.1), nothing, overload);
+    expect(valueOf(taken, 'meter', 'voltage')).toBe(15.1);
+    expect(valueOf(taken, 'load', 'voltage')).toBeNaN();
+    expect(valueOf(taken, 'load', 'current')).toBeNaN();
+    expect(valueOf(taken, 'meter', 'current')).toBeNaN();
+  });
+});

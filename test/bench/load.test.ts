@@ -1,0 +1,106 @@
+import { describe, expect, it } from 'vitest';
+import type { InputState } from '../../src/bench/load.js';
+import { nursery, type NurseryChange } from './nursery-bench.js';
+
+const { operations } = (await nursery()).drivers.load;
+
+async function opened(change: NurseryChange = {}) {
+  const told: [InputState, boolean][] = [];
+  const place = await nursery({ onInput: (...change) => told.push(change), ...change });
+  const bench = await place.open();
+  return { ...place, bench, load: bench.load, world: place.simulation.world, told };
+}
+
+describe('the load of a bench', () => {
+  it('is made ready without its input being touched: at 0 A, with its own protections set', async () => {
+    const { load, world, told } = await opened();
+    await load.prepare();
+    expect(world.load).toMatchObject({ input: 'off', mode: 'current', setCurrent: 0 });
+    expect(told).toEqual([]);
+  });
+
+  it("protects itself a little above the bench's ceiling, so that its own error there is no dropout", async () => {
+    const { load, world } = await opened({
+      limits: { current: 5 },
+      simulation: {
+        instruments: { load: { errors: { 'set-current': { gain: 0.004, offset: 0.01, resolution: 0 } } } },
+      },
+    });
+    await load.prepare();
+    await load.inputOn();
+    await load.setCurrent(5);
+    expect(world.load.protection.current).toBeCloseTo(5.5, 9);
+    expect(world.load.input).toBe('on');
+  });
+
+  it('never protects itself beyond its own rating, which it would refuse', async () => {
+    const { load, world } = await opened({ limits: { current: 100 } });
+    await load.prepare();
+    expect(world.load.protection.current).toBe(40);
+  });
+
+  it('is ready without protections where its driver has none', async () => {
+    const { load, world } = await opened({ file: 'nursery-short' });
+    await load.prepare();
+    expect(world.load).toMatchObject({ input: 'off', mode: 'current', protection: {} });
+  });
+
+  it('tells of its input only once it was read back', async () => {
+    const { load, world, told } = await opened();
+    await load.inputOn();
+    expect(world.load.input).toBe('on');
+    await load.inputOff();
+    expect(world.load.input).toBe('off');
+    expect(told).toEqual([
+      ['on', true],
+      ['off', true],
+    ]);
+  });
+
+  it.each([8.001, 1000, Number.POSITIVE_INFINITY, Number.NaN])(
+    'refuses to be set to %d A before anything is sent',
+    async (amps) => {
+      const { load, world, clock } = await opened();
+      await load.setCurrent(1);
+      const before = clock.now();
+      await expect(load.setCurrent(amps)).rejects.toMatchObject({
+        code: 'BEYOND_CEILING',
+        exitCode: 3,
+        setBy: 'the bench',
+        message: expect.stringMatching(/ was asked for and the bench allows 8 A$/) as string,
+      });
+      expect(world.load.setCurrent).toBe(1);
+      // Each message takes its time on the line.
+      expect(clock.now()).toBe(before);
+    },
+  );
+
+  it('takes a current that came out a hair below zero for none', async () => {
+    const { load, world } = await opened();
+    await load.setCurrent(-1e-17);
+    expect(world.load.setCurrent).toBe(0);
+  });
+
+  it('that says it is off when it was told to be on stops the run', async () => {
+    const { load, told } = await opened({ load: { operations: { ...operations, 'input-on': ['*CLS'] } } });
+    await expect(load.inputOn()).rejects.toMatchObject({
+      code: 'DISOBEYED',
+      exitCode: 69,
+      message: 'the load at simulated:standard-load was told to switch its input on and says that it is off',
+    });
+    expect(told).toEqual([['on', false]]);
+  });
+
+  it('that says it is on when it was told to be off stops the run', async () => {
+    const { load, told } = await opened({ load: { operations: { ...operations, 'input-off': ['*CLS'] } } });
+    await load.inputOn();
+    await expect(load.inputOff()).rejects.toMatchObject({
+      code: 'DISOBEYED',
+      message: 'the load at simulated:standard-load was told to switch its input off and says that it is on',
+    });
+    expect(told).toEqual([
+      ['on', true],
+      ['off', false],
+    ]);
+  });
+});

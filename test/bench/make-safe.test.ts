@@ -1,0 +1,139 @@
+import { describe, expect, it } from 'vitest';
+import { makeSafe } from '../../src/bench/make-safe.js';
+import type { InputState } from '../../src/bench/load.js';
+import { nursery, type NurseryChange } from './nursery-bench.js';
+
+const fromDriver = (await nursery()).drivers.load;
+
+/** A bench with the load at work on K1, at 4 A. */
+async function atWork(change: NurseryChange = {}) {
+  const told: [InputState, boolean][] = [];
+  const place = await nursery({ onInput: (...each) => told.push(each), ...change });
+  const bench = await place.open();
+  await bench.load.prepare();
+  await bench.load.setCurrent(4);
+  await bench.load.inputOn();
+  return { ...place, bench, told, world: place.simulation.world };
+}
+
+describe('a bench is made safe', () => {
+  it('by the load being put off and read back', async () => {
+    const { bench, world, told, lines } = await atWork();
+    expect(world.load.input).toBe('on');
+    expect(await makeSafe(bench)).toEqual({ kind: 'confirmed' });
+    expect(world.load.input).toBe('off');
+    expect(told.at(-1)).toEqual(['off', true]);
+    expect(lines).toHaveLength(2);
+  });
+
+  it('though the load was off already', async () => {
+    const { bench } = await atWork();
+    await bench.load.inputOff();
+    expect(await makeSafe(bench)).toEqual({ kind: 'confirmed' });
+  });
+
+  it('over a new line when the old one was lost, and that is the only one then', async () => {
+    const { bench, world, lines } = await atWork();
+    await lines[0]?.close();
+    expect(await makeSafe(bench)).toEqual({ kind: 'confirmed' });
+    expect(world.load.input).toBe('off');
+    expect(lines).toHaveLength(3);
+    expect(bench.instruments).toHaveLength(2);
+    expect(await bench.load.isOn()).toBe(false);
+  });
+
+  it('though the load complains about how it was told', async () => {
+    const { bench, world, lines } = await atWork({
+      load: { operations: { ...fromDriver.operations, 'make-safe': ['INP OFF', 'LAMP OFF'] } },
+    });
+    expect(await makeSafe(bench)).toEqual({ kind: 'confirmed' });
+    expect(world.load.input).toBe('off');
+    expect(lines).toHaveLength(2);
+  });
+
+  it('though the journal can take nothing more, which it is told at every turn', async () => {
+    let full = false;
+    const listen = (): void => {
+      if (full) throw new Error('the disk is full');
+    };
+    const { bench, world, lines } = await atWork({ onInput: listen, onNotice: listen });
+    full = true;
+    // An error that is still in the load's queue is a notice when the line is opened again.
+    await lines[0]?.write(Buffer.from('LAMP ON\n'));
+    await lines[0]?.close();
+    expect(await makeSafe(bench)).toEqual({ kind: 'confirmed' });
+    expect(world.load.input).toBe('off');
+    // Otherwise what can't be recorded is not done.
+    await expect(bench.load.inputOn()).rejects.toThrow('the disk is full');
+  });
+});
+
+describe('that a bench is safe is not claimed', () => {
+  it('when the load says that it is still on, though it was told thrice', async () => {
+    const { bench, told, world } = await atWork({
+      load: { operations: { ...fromDriver.operations, 'make-safe': ['*CLS'] } },
+    });
+    expect(await makeSafe(bench)).toEqual({
+      kind: 'unconfirmed',
+      why: 'the load at simulated:standard-load was made safe and says that its input is on',
+      advice:
+        'THE LOAD MAY STILL BE ON. Switch its input off at its front panel, or unplug the module, before you touch the leads.',
+    });
+    expect(world.load.input).toBe('on');
+    expect(told.slice(-3)).toEqual([
+      ['off', false],
+      ['off', false],
+      ['off', false],
+    ]);
+  });
+
+  it('when the load lies about its state', async () => {
+    const { bench, world } = await atWork({
+      load: {
+        readings: {
+          ...fromDriver.readings,
+          'input-state': { kind: 'flag', ask: ['INP?'], trueWhen: /^[01]$/ },
+        },
+      },
+    });
+    expect(await makeSafe(bench)).toMatchObject({ kind: 'unconfirmed' });
+    expect(world.load.input).toBe('off');
+  });
+
+  it('when the load is gone for good, and that is said and not thrown', async () => {
+    const { bench, clock, lines } = await atWork({
+      simulation: { faults: [{ at: 10, what: 'load-lost' }] },
+    });
+    await clock.sleep(20);
+    expect(await makeSafe(bench)).toMatchObject({
+      kind: 'unconfirmed',
+      why: expect.stringMatching(/^simulated:standard-load: connection lost/) as string,
+    });
+    expect(lines).toHaveLength(4);
+    await expect(bench.close()).resolves.toBeUndefined();
+  });
+
+  it('when the load is silent; it is told all the same, and nobody waits for long', async () => {
+    const { bench, clock } = await atWork({ simulation: { faults: [{ at: 10, what: 'load-silent' }] } });
+    await clock.sleep(20);
+    const began = clock.now();
+    expect(await makeSafe(bench)).toMatchObject({
+      kind: 'unconfirmed',
+      why: expect.stringMatching(/did not answer/) as string,
+    });
+    expect(clock.now() - began).toBeLessThan(10);
+  });
+
+  it('leaves at most one line to the load open at a time', async () => {
+    const { bench, lines } = await atWork({
+      load: { operations: { ...fromDriver.operations, 'make-safe': ['*CLS'] } },
+    });
+    await makeSafe(bench);
+    const load = lines.filter((_, index) => index !== 1);
+    expect(load).toHaveLength(3);
+    for (const line of load.slice(0, -1)) {
+      await expect(line.write(Buffer.from('*CLS\n'))).rejects.toThrow(/closed/);
+    }
+    await expect(load.at(-1)?.write(Buffer.from('*CLS\n'))).resolves.toBeUndefined();
+  });
+});

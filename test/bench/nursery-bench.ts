@@ -1,0 +1,94 @@
+import { fileURLToPath } from 'node:url';
+import type { InputListener } from '../../src/bench/load.js';
+import { type OpenBench, openBench } from '../../src/bench/open-bench.js';
+import { VirtualClock } from '../../src/clock/virtual-clock.js';
+import type { Bench } from '../../src/files/bench.js';
+import type { Driver } from '../../src/files/driver.js';
+import { readBench } from '../../src/files/read-bench.js';
+import { readDriver } from '../../src/files/read-driver.js';
+import type { SimulatedModule, Simulation } from '../../src/files/simulation-section.js';
+import type { Connection } from '../../src/instrument/connection.js';
+import { type OpenedSimulation, openSimulation } from '../../src/simulation/open-simulation.js';
+
+const fromHere = (path: string): string => fileURLToPath(new URL(path, import.meta.url));
+const shelves = { relativeTo: fromHere('../../fixtures'), shipped: fromHere('../../drivers') };
+
+/** One of the nursery's benches, with what a test wants to be otherwise on it. */
+export interface NurseryChange {
+  /** `nursery` when left out. */
+  readonly file?: string;
+  readonly module?: Partial<SimulatedModule>;
+  readonly simulation?: Partial<Simulation>;
+  readonly limits?: Partial<Bench['limits']>;
+  readonly bench?: Partial<Bench>;
+  readonly load?: Partial<Driver>;
+  readonly meter?: Partial<Driver>;
+  readonly onInput?: InputListener;
+  readonly onNotice?: (text: string) => void;
+}
+
+export interface Nursery {
+  readonly description: Bench;
+  readonly drivers: { readonly load: Driver; readonly meter: Driver };
+  readonly clock: VirtualClock;
+  readonly simulation: OpenedSimulation;
+  /** Every line to an instrument that was opened, oldest first. */
+  readonly lines: readonly Connection[];
+  readonly open: () => Promise<OpenBench>;
+}
+
+/** The bench of a shipped file and shipped drivers; its instruments are reached by bytes, in virtual time. */
+export async function nursery(change: NurseryChange = {}): Promise<Nursery> {
+  const file = await readBench(fromHere(`../../fixtures/benches/${change.file ?? 'nursery'}.yaml`));
+  const description = described(file.value, change);
+  const { instruments, simulation } = description;
+  if (simulation === undefined) throw new Error(`${file.path} is not simulated`);
+  const shippedLoad = await readDriver(instruments.load.driver, shelves);
+  const shippedMeter = await readDriver(instruments.meter?.driver ?? '', shelves);
+  // What stands there speaks as the shipped drivers say; a changed driver is how we speak to it.
+  const there = { load: shippedLoad.value, meter: shippedMeter.value };
+  const drivers = { load: { ...there.load, ...change.load }, meter: { ...there.meter, ...change.meter } };
+  const clock = new VirtualClock(new Date('2026-11-20T09:00:00Z'));
+  const opened = openSimulation({ simulation, clock, drivers: there });
+  const lines: Connection[] = [];
+  return {
+    description,
+    drivers,
+    clock,
+    simulation: opened,
+    lines,
+    open: () =>
+      openBench({
+        bench: description,
+        drivers,
+        clock,
+        connect: (_address, _driver, role) => {
+          const line = opened.connect(role, role === 'load' ? there.load : there.meter);
+          lines.push(line);
+          return Promise.resolve(line);
+        },
+        onInput: change.onInput ?? (() => undefined),
+        onNotice: change.onNotice ?? (() => undefined),
+      }),
+  };
+}
+
+function described(bench: Bench, change: NurseryChange): Bench {
+  const { simulation } = bench;
+  const [module] = simulation?.modules ?? [];
+  if (simulation === undefined || module === undefined) throw new Error(`${bench.name} is not simulated`);
+  return {
+    ...bench,
+    limits: { ...bench.limits, ...change.limits },
+    simulation: { ...simulation, modules: [{ ...module, ...change.module }], ...change.simulation },
+    ...change.bench,
+  };
+}
+
+const none = { gain: 0, offset: 0, resolution: 0 };
+
+/** Instruments that show and do exactly what they should. */
+export const exactInstruments: Simulation['instruments'] = {
+  load: { errors: { voltage: none, current: none, 'set-current': none, 'set-voltage': none } },
+  meter: { errors: { voltage: none } },
+};

@@ -1,0 +1,53 @@
+import { describe, expect, it } from 'vitest';
+import { nursery } from './nursery-bench.js';
+
+describe('a bench that is opened', () => {
+  it('has its instruments identified and nothing switched on', async () => {
+    const { open, simulation } = await nursery();
+    const bench = await open();
+    expect(bench.instruments.map(({ role, identity }) => [role, identity])).toEqual([
+      ['load', 'railproof,simulated load,K-bench,1'],
+      ['meter', 'railproof,simulated meter,K-bench,1'],
+    ]);
+    expect(simulation.world.load).toMatchObject({ input: 'off', setCurrent: 0 });
+  });
+
+  it('reads all there is to read at one moment, the current last', async () => {
+    const bench = await (await nursery()).open();
+    const taken = await bench.sample();
+    expect(taken.map(({ of, what }) => `${of} ${what}`)).toEqual([
+      'meter voltage',
+      'load voltage',
+      'load current',
+    ]);
+    expect(taken.map(({ measurement }) => measurement.kind)).toEqual(['value', 'value', 'value']);
+  });
+
+  it('closes what it had opened when the second instrument does not answer', async () => {
+    const { open, lines } = await nursery({ simulation: { faults: [{ at: 0, what: 'meter-silent' }] } });
+    await expect(open()).rejects.toMatchObject({ code: 'INSTRUMENT_SILENT', exitCode: 69 });
+    expect(lines).toHaveLength(2);
+    for (const line of lines) await expect(line.write(Buffer.from('*IDN?\n'))).rejects.toThrow(/closed/);
+  });
+
+  it('closes the only one it had opened when that is not what its driver is for', async () => {
+    const { open, lines } = await nursery({ load: { identity: /^PUMP/ } });
+    await expect(open()).rejects.toMatchObject({ code: 'WRONG_INSTRUMENT' });
+    expect(lines).toHaveLength(1);
+    await expect(lines[0]?.write(Buffer.from('*IDN?\n'))).rejects.toThrow(/closed/);
+  });
+
+  it('hands its instruments back when it is closed, and closing never fails', async () => {
+    const notices: string[] = [];
+    const { open, lines } = await nursery({
+      onNotice: (text) => notices.push(text),
+      load: { release: ['INP OFF'] },
+    });
+    const bench = await open();
+    await lines[1]?.close();
+    await expect(bench.close()).resolves.toBeUndefined();
+    for (const line of lines) await expect(line.write(Buffer.from('*IDN?\n'))).rejects.toThrow(/closed/);
+    await expect(bench.close()).resolves.toBeUndefined();
+    expect(notices).toEqual([]);
+  });
+});

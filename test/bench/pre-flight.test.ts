@@ -1,0 +1,92 @@
+import { describe, expect, it } from 'vitest';
+import { openBench } from '../../src/bench/open-bench.js';
+import { checkInputIsOff, checkOpenCircuitVoltage } from '../../src/bench/pre-flight.js';
+import { nursery, type NurseryChange } from './nursery-bench.js';
+
+async function opened(change: NurseryChange = {}) {
+  const place = await nursery(change);
+  return { ...place, bench: await place.open() };
+}
+
+describe('before anything is switched on', () => {
+  it('an input that is off and a module with the voltage of its nameplate are fine', async () => {
+    const { bench, simulation } = await opened();
+    await checkInputIsOff(bench);
+    await checkOpenCircuitVoltage(bench, 15);
+    expect(simulation.world.load.input).toBe('off');
+  });
+
+  it('an input that is on already stops the run: somebody else may be at work', async () => {
+    const { bench, simulation, clock } = await opened();
+    simulation.world.setLoad({ input: 'on', setCurrent: 1 }, clock.now());
+    await expect(checkInputIsOff(bench)).rejects.toMatchObject({
+      code: 'PRE_FLIGHT',
+      exitCode: 3,
+      message: 'before anything was switched on: the input of the load at simulated:standard-load is on',
+    });
+  });
+
+  it.each<[string, NurseryChange, RegExp, RegExp]>([
+    [
+      'no voltage',
+      { simulation: { faults: [{ at: 0, what: 'module-dead' }] } },
+      /^before anything was switched on: the module reads -?\d+(\.\d+)? m?V$/,
+      /plugged in/,
+    ],
+    [
+      'reversed leads',
+      { simulation: { faults: [{ at: 0, what: 'reversed' }] } },
+      /: the module reads -15\.\d+ V$/,
+      /swap the leads/,
+    ],
+    [
+      'another module than the file says',
+      { module: { openCircuitVoltage: 24.2 } },
+      /: the module reads 24\.\d+ V and its nameplate says 15 V$/,
+      /right module file/,
+    ],
+    [
+      'a voltage that is too low',
+      { module: { openCircuitVoltage: 9 } },
+      /reads \d+(\.\d+)? V and its nameplate says 15 V$/,
+      /right module/,
+    ],
+  ])('%s stops the run with advice', async (_, change, message, advice) => {
+    const { bench } = await opened(change);
+    await expect(checkOpenCircuitVoltage(bench, 15)).rejects.toMatchObject({
+      code: 'PRE_FLIGHT',
+      message: expect.stringMatching(message) as string,
+      advice: expect.stringMatching(advice) as string,
+    });
+  });
+
+  it('a voltage within a quarter of the nameplate is taken, as tired modules have it', async () => {
+    const { bench } = await opened({ module: { openCircuitVoltage: 12 } });
+    await expect(checkOpenCircuitVoltage(bench, 15)).resolves.toBeUndefined();
+  });
+
+  it('a voltage that can not be read stops the run', async () => {
+    // Asked for a resistance, a meter on a live output shows overload.
+    const { bench } = await opened({
+      file: 'nursery-short',
+      meter: { readings: { voltage: { kind: 'number', ask: ['MEAS:RES?'], dimension: 'voltage' } } },
+    });
+    await expect(checkOpenCircuitVoltage(bench, 15)).rejects.toMatchObject({
+      message: 'before anything was switched on: the voltage of the module could not be read',
+    });
+  });
+
+  it('the load looks where there is no meter', async () => {
+    const place = await nursery({ simulation: { faults: [{ at: 0, what: 'reversed' }] } });
+    const { description, drivers } = place;
+    const bench = await openBench({
+      bench: { ...description, voltageFrom: 'load-terminals' },
+      drivers: { load: drivers.load },
+      clock: place.clock,
+      connect: () => Promise.resolve(place.simulation.connect('load', drivers.load)),
+      onInput: () => undefined,
+      onNotice: () => undefined,
+    });
+    await expect(checkOpenCircuitVoltage(bench, 15)).rejects.toThrow(/the module reads -1\d(\.\d+)? V$/);
+  });
+});
