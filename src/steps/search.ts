@@ -109,13 +109,17 @@ export class Search {
   async #watch(current: Amperes): Promise<void> {
     this.#watched = true;
     const { watch } = this.#parameters;
+    if (watch === 0) return;
+    const end = this.#context.clock.now() + watch;
     await this.#points.take({
       phase: 'overload',
       set: { current },
       dwell: 0,
-      readings: Math.max(2, Math.round(watch / (watchInterval + 0.05))),
+      // By time and not by number, as a slow meter must not make a long overload of a short one.
+      readings: Number.POSITIVE_INFINITY,
       every: watchInterval,
       judge: () => 'measured',
+      until: ({ t }) => t >= end,
     });
   }
 
