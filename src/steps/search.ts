@@ -59,7 +59,7 @@ export class Search {
     const { load } = this.#context.bench;
     await load.setCurrent(0);
     await load.inputOn();
-    await this.#probe('start', this.#parameters.from);
+    await this.#probe('start', Math.min(this.#parameters.from, this.#parameters.ceiling));
     await this.#climb();
     await this.#halve();
     await this.#closeInOnSteadiness();
@@ -71,6 +71,7 @@ export class Search {
   async #climb(): Promise<void> {
     const { from, ceiling, climb } = this.#parameters;
     const stride = (ceiling - from) / climb;
+    if (stride <= 0) return;
     for (let step = 1; step <= climb && this.#dropped === undefined; step += 1) {
       await this.#probe('climb', step === climb ? ceiling : from + stride * step);
     }
