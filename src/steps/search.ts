@@ -63,6 +63,8 @@ export class Search {
     await this.#climb();
     await this.#halve();
     await this.#closeInOnSteadiness();
+    // Looking for steadiness may have shown that the limit has come down since.
+    await this.#halve();
     await load.setCurrent(0);
     await load.inputOff();
     return { held: this.#held, dropped: this.#dropped };
@@ -102,6 +104,8 @@ export class Search {
       return;
     }
     this.#dropped = Math.min(this.#dropped ?? Number.POSITIVE_INFINITY, current);
+    // What was held above it earlier proves nothing any more.
+    if (this.#held >= current) this.#held = Math.max(0, current - this.#retreat());
     if (!this.#watched) await this.#watch(current);
     await this.#return();
   }
