@@ -104,3 +104,10 @@ export function moduleVoltage({ bench }: StepContext, taken: readonly Taken[]): 
   const current = valueOf(taken, 'load', 'current');
   return valueOf(taken, 'load', 'voltage') + current * bench.description.leads.resistance;
 }
+
+/** The last digit of the instrument that `moduleVoltage` comes from; 0 when its driver does not say. */
+export function voltageResolution({ bench }: StepContext): Volts {
+  const instrument =
+    bench.description.voltageFrom === 'meter-at-module' ? bench.meter : bench.load.instrument;
+  return instrument?.driver.accuracy['voltage']?.resolution ?? 0;
+}

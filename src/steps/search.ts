@@ -1,8 +1,8 @@
-import type { Amperes, Ratio, Seconds } from '../quantity/quantity.js';
+import type { Amperes, Ratio, Seconds, Volts } from '../quantity/quantity.js';
 import type { Phase } from '../record/journal-event.js';
 import { holds } from './holding.js';
 import { openCircuitVoltage } from './known-voltage.js';
-import { type PointSeen, Points } from './point.js';
+import { type PointSeen, Points, voltageResolution } from './point.js';
 import { comeBack } from './recover.js';
 import type { StepContext } from './step-kind.js';
 import { firstUnsteady, type Probe } from './steadiness.js';
@@ -41,7 +41,8 @@ export class Search {
   readonly #parameters: SearchParameters;
   readonly #context: StepContext;
   readonly #points: Points;
-  readonly #openCircuit: number;
+  readonly #openCircuit: Volts;
+  readonly #resolution: Volts;
   readonly #probes: Probe[] = [];
   #held: Amperes = 0;
   #dropped: Amperes | undefined;
@@ -53,6 +54,7 @@ export class Search {
     this.#context = context;
     this.#points = new Points(context);
     this.#openCircuit = openCircuitVoltage(context);
+    this.#resolution = voltageResolution(context);
   }
 
   async run(): Promise<Bracket> {
@@ -90,7 +92,7 @@ export class Search {
   /** Between the last steady and the first unsteady current, held ones all: it costs no dropout. */
   async #closeInOnSteadiness(): Promise<void> {
     while (!this.#givenUp && this.#probes.length < mostProbes) {
-      const edge = firstUnsteady(this.#probes);
+      const edge = firstUnsteady(this.#probes, this.#resolution);
       if (edge === undefined || edge.unsteady - edge.steady <= 2 * this.#parameters.resolution) return;
       await this.#probe('steadiness', (edge.steady + edge.unsteady) / 2);
     }
