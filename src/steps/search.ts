@@ -47,6 +47,7 @@ export class Search {
   #held: Amperes = 0;
   #dropped: Amperes | undefined;
   #watched = false;
+  #retreats = 0;
   #givenUp = false;
 
   constructor(parameters: SearchParameters, context: StepContext) {
@@ -159,9 +160,10 @@ export class Search {
     }
   }
 
-  /** The limit has come down, by warming mostly: step back by a fiftieth, and at least ten resolutions. */
+  /** The limit has come down, by warming mostly and by little: two resolutions, and twice as far each time. */
   #retreat(): Amperes {
-    return Math.max(10 * this.#parameters.resolution, this.#held / 50);
+    this.#retreats += 1;
+    return this.#parameters.resolution * 2 ** this.#retreats;
   }
 
   #take(phase: Phase, current: Amperes): Promise<PointSeen> {
