@@ -4,8 +4,12 @@ import { dimensions, type Dimension } from '../quantity/quantity.js';
 import { parseQuantity } from '../quantity/parse-quantity.js';
 import { QuantityError } from '../quantity/quantity-error.js';
 import { defineStep } from './define-step.js';
+import { AnswerNotUnderstoodError } from './step-error.js';
 
 const answers = ['done', 'text', ...(Object.keys(dimensions) as Dimension[])] as const;
+
+/** A person who mistypes is asked again; what answers the same for ever must not hold the run for ever. */
+const mostAttempts = 5;
 
 export const operatorStep = defineStep({
   kind: 'operator',
@@ -28,7 +32,7 @@ export const operatorStep = defineStep({
   async perform({ name, ask, act, answer }, { operator, journal, signal, step }) {
     let text = ask;
     journal.append({ event: 'prompt', step, text: ask, ...(act === undefined ? {} : { act }) });
-    for (;;) {
+    for (let attempt = 1; ; attempt += 1) {
       const given = await operator.ask({ name, text, answer, ...(act === undefined ? {} : { act }) }, signal);
       if (answer === 'done' || answer === 'text') {
         journal.append({ event: 'answer', step, name, answer: given });
@@ -40,8 +44,11 @@ export const operatorStep = defineStep({
         return;
       } catch (error) {
         if (!(error instanceof QuantityError)) throw error;
+        if (attempt === mostAttempts) {
+          throw new AnswerNotUnderstoodError({ question: name, attempts: attempt, cause: error });
+        }
         journal.append({ event: 'notice', text: `the answer was not understood: ${error.message}` });
-        text = `${error.message}. ${ask}`;
+        text = `That was not understood: ${error.message}.\n${ask}`;
       }
     }
   },
