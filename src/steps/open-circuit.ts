@@ -22,7 +22,8 @@ export const openCircuit = defineStep({
     await context.bench.load.inputOff();
     const points = new Points(context);
     const end = context.clock.now() + parameters.for;
-    const means: number[] = [];
+    let sum = 0;
+    let count = 0;
     do {
       const { samples } = await points.take({
         phase: 'idle',
@@ -31,13 +32,13 @@ export const openCircuit = defineStep({
         readings: samplesAtOnce,
         judge: () => 'measured',
       });
-      means.push(meanOf(samples.map((sample) => sample.voltage)));
+      for (const { voltage } of samples) {
+        if (Number.isNaN(voltage)) continue;
+        sum += voltage;
+        count += 1;
+      }
     } while (context.clock.now() < end);
-    context.known['open-circuit-voltage'] = meanOf(means);
+    // Where nothing could be read, nothing is known: the nameplate goes on standing in for it.
+    if (count > 0) context.known['open-circuit-voltage'] = sum / count;
   },
 });
-
-function meanOf(values: readonly number[]): number {
-  const known = values.filter((value) => !Number.isNaN(value));
-  return known.reduce((sum, value) => sum + value, 0) / known.length;
-}
