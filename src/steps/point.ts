@@ -51,7 +51,8 @@ export class Points {
     const point = this.#count;
     journal.append({ event: 'point-began', step, point, phase: plan.phase, set: plan.set });
     if (plan.set.current !== undefined) await bench.load.setCurrent(plan.set.current);
-    await clock.sleep(Math.max(plan.dwell, bench.load.instrument.driver.settling), signal);
+    const settling = bench.instruments.map(({ driver }) => driver.settling);
+    await clock.sleep(Math.max(plan.dwell, ...settling), signal);
     const ends = plan.until ?? ((_seen, judged) => judged === 'dropped');
     const samples: Seen[] = [];
     let outcome: PointOutcome = 'measured';
