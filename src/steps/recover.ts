@@ -40,7 +40,7 @@ export async function comeBack(
   }
   const request = {
     name: 'cycle-input',
-    text: `The module has switched itself off and stays off. Unplug it, wait until its lamp is out (half a minute), plug it in again.`,
+    text: 'The module has switched itself off and stays off. Unplug it, wait until its lamp is out (half a minute), plug it in again.',
     act: 'cycle input',
     answer: 'done',
   } as const;

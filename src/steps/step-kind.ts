@@ -21,7 +21,7 @@ export interface StepKind<Parameters = unknown> {
   readonly needs: {
     /** The module is connected and on, so its voltage is checked beforehand. */
     readonly liveModule: boolean;
-    /** Someone who can act is needed in any case, or only when something out of the ordinary happens. */
+    /** Whether it can't be done without someone who can act; a step may still ask one who is there. */
     readonly operator: 'always' | 'never';
   };
   /** Every quantity among the parameters that may refer to another, by parameter name. */
