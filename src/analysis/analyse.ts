@@ -20,7 +20,8 @@ import { usableFindings } from './usable-current.js';
 export function analyse(evidence: Evidence): readonly Finding[] {
   const held = heldPoints(evidence.steps);
   const unsteady = steadinessFindings(evidence, held);
-  const steady = held.filter((point) => point.current < numberOf(unsteady, Number.POSITIVE_INFINITY));
+  const edge = numberNamed('unsteady-above-current', unsteady) ?? Number.POSITIVE_INFINITY;
+  const steady = held.filter((point) => point.current < edge);
   const knee = findKnee(steady);
   const ramp = new Set(stepsOf(evidence, 'load-ramp').map((step) => step.step));
   const regulated = steady.filter(
@@ -28,13 +29,16 @@ export function analyse(evidence: Evidence): readonly Finding[] {
   );
   const idle = openCircuitFindings(evidence);
   const regulation = regulationFindings(evidence, regulated, idle.length > 0);
-  const dropout = dropoutFindings(evidence, dropoutBracket(evidence));
-  const openCircuit = [...idle, ...regulation].find((finding) => finding.name === 'open-circuit-voltage');
-  const style = limitStyleFindings(
-    evidence,
-    dropout.length === 0 ? undefined : numberOf(dropout, Number.NaN),
-    typeof openCircuit?.value === 'number' ? openCircuit.value : undefined,
-  );
+  const droop = numberNamed('droop-resistance', regulation);
+  const dropout = dropoutFindings(evidence, dropoutBracket(evidence), {
+    held: steady,
+    resistance: knee === undefined ? droop : -knee.right.slope,
+  });
+  const style = limitStyleFindings(evidence, {
+    dropout: numberNamed('dropout-current', dropout),
+    openCircuit: numberNamed('open-circuit-voltage', [...idle, ...regulation]),
+    droop,
+  });
   const usable = usableFindings(evidence, { dropout: dropout[0], unsteady: unsteady[0], held });
   return [
     ...usable,
@@ -51,7 +55,7 @@ export function analyse(evidence: Evidence): readonly Finding[] {
   ];
 }
 
-function numberOf(findings: readonly Finding[], otherwise: number): number {
-  const value = findings[0]?.value;
-  return typeof value === 'number' ? value : otherwise;
+function numberNamed(name: string, findings: readonly Finding[]): number | undefined {
+  const value = findings.find((finding) => finding.name === name)?.value;
+  return typeof value === 'number' ? value : undefined;
 }

@@ -1,19 +1,22 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Amperes } from '../quantity/quantity.js';
+import type { Amperes, Ohms, Ratio, Volts } from '../quantity/quantity.js';
+import { median } from '../statistics/checked.js';
 import { fitLine } from '../statistics/line-fit.js';
 import { rectangular } from '../statistics/uncertainty-budget.js';
 import { heldPoints, stepsOf, type CurvePoint } from './curve.js';
 import type { Evidence, StepEvidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
-import { promised, promisedErrors } from './promised-errors.js';
+import { moduleVoltageErrors, promised, promisedErrors } from './promised-errors.js';
 
 /** Between what the module held and where it dropped out, as currents that really flowed. */
 export interface DropoutBracket {
   readonly step: number;
   readonly held: Amperes;
   readonly dropped: Amperes;
-  /** As much or more was held earlier: the limit came down meanwhile. */
-  readonly moved: boolean;
+  /** From the highest held to the lowest dropped point; infinite where no voltage could be read there. */
+  readonly fall: Volts;
+  /** How far above the dropped current one was held earlier; undefined where none was. */
+  readonly heldAbove: Amperes | undefined;
 }
 
 /**
@@ -30,22 +33,36 @@ export function dropoutBracket(evidence: Evidence): DropoutBracket | undefined {
 
 /** Where the step itself held nothing below, what other steps of the record held is the lower end. */
 function bracketOf(step: StepEvidence, inRecord: readonly CurvePoint[]): readonly DropoutBracket[] {
-  const dropped = step.points.flatMap(({ outcome, phase, set }) =>
-    outcome === 'dropped' && phase !== 'recovery' && set.current !== undefined ? [set.current] : [],
-  );
-  if (dropped.length === 0) return [];
-  const lowestDropped = Math.min(...dropped);
+  const dropped = step.points
+    .flatMap(({ outcome, phase, set, moduleVoltage }) =>
+      outcome === 'dropped' && phase !== 'recovery' && set.current !== undefined
+        ? [
+            {
+              set: set.current,
+              voltage: moduleVoltage.count > 0 ? moduleVoltage.mean : Number.NEGATIVE_INFINITY,
+            },
+          ]
+        : [],
+    )
+    .sort((one, other) => one.set - other.set)
+    .at(0);
+  if (dropped === undefined) return [];
   const inStep = heldPoints([step]);
-  const held = inStep.some((point) => point.set < lowestDropped) ? inStep : inRecord;
-  const below = held.filter((point) => point.set < lowestDropped);
-  if (below.length === 0) return [];
+  const held = inStep.some((point) => point.set < dropped.set) ? inStep : inRecord;
+  const highest = held
+    .filter((point) => point.set < dropped.set)
+    .sort((one, other) => one.set - other.set)
+    .at(-1);
+  if (highest === undefined) return [];
   const flowing = readBackLine(held);
+  const most = Math.max(...inStep.map((point) => point.set));
   return [
     {
       step: step.step,
-      held: flowing(Math.max(...below.map((point) => point.set))),
-      dropped: flowing(lowestDropped),
-      moved: inStep.some((point) => point.set >= lowestDropped),
+      held: flowing(highest.set),
+      dropped: flowing(dropped.set),
+      fall: highest.voltage - dropped.voltage,
+      heldAbove: most >= dropped.set ? flowing(most) - flowing(dropped.set) : undefined,
     },
   ];
 }
@@ -68,30 +85,82 @@ function readBackLine(held: readonly CurvePoint[]): (set: Amperes) => Amperes {
   return (set) => (nearest === undefined ? set : set + (nearest.current - nearest.set));
 }
 
-/** `dropout-current`: the middle of the bracket; rectangular in it, with the promise of the load's current. */
-export function dropoutFindings(evidence: Evidence, bracket: DropoutBracket | undefined): readonly Finding[] {
+/** A single reading decides whether a point was held, and lies this many standard deviations away at most. */
+const widest = 3;
+
+/**
+ * `dropout-current`: the middle of the bracket; rectangular in it, with the promise of the load's current.
+ * Where the voltage does not break down but sinks through the sag, what is uncertain of the voltage there
+ * decides where the sag is met, and counts as a current by the resistance there: the scatter of single
+ * readings, and the leads where they were added by calculation. A gain of the voltage drops out, as the
+ * sag is a share of what the same instrument read at no load.
+ * @param curve the points that were held, and how steeply the voltage falls at their upper end.
+ */
+export function dropoutFindings(
+  evidence: Evidence,
+  bracket: DropoutBracket | undefined,
+  curve: { readonly held: readonly CurvePoint[]; readonly resistance: Ohms | undefined },
+): readonly Finding[] {
   if (bracket === undefined) return [];
-  const value = (bracket.held + bracket.dropped) / 2;
+  const { held, dropped, step } = bracket;
+  const value = (held + dropped) / 2;
   const current = promisedErrors(evidence.header, 'load', 'current');
-  const between =
-    `held ${formatQuantity(bracket.held, 'current', { significant: 4 })}, ` +
-    `dropped ${formatQuantity(bracket.dropped, 'current', { significant: 4 })}`;
-  const note = bracket.moved ? `${between}; it had held more before: the limit came down meanwhile` : between;
+  const slope = slopeThrough(evidence, bracket, curve);
   return [
     measured(
       'dropout-current',
       'current',
       value,
       [
-        promised(
-          'between the held and the dropped current',
-          rectangular((bracket.dropped - bracket.held) / 2),
-        ),
+        promised('between the held and the dropped current', rectangular(Math.abs(dropped - held) / 2)),
+        ...(slope === undefined
+          ? []
+          : [promised('scatter of the voltage at the sag', rectangular(slope.scatter))]),
+        ...(slope === undefined || slope.leads === 0
+          ? []
+          : [promised('resistance of the leads', slope.leads * value)]),
         promised(`${current.of}, gain`, current.gain * value),
         promised(`${current.of}, offset`, current.offset),
         promised(`${current.of}, resolution`, current.resolution),
       ],
-      { step: bracket.step, note },
+      { step, note: noteOf(bracket, slope) },
     ),
   ];
+}
+
+/** Where the voltage goes through the sag on a slope. */
+interface Slope {
+  /** The scatter of a reading, as a current. */
+  readonly scatter: Amperes;
+  /** Standard uncertainty of the leads' resistance, as a share of the resistance there. */
+  readonly leads: Ratio;
+}
+
+/** Undefined where the voltage fell by more than its slope explains: the module broke down. */
+function slopeThrough(
+  evidence: Evidence,
+  { held, dropped, fall }: DropoutBracket,
+  curve: { readonly held: readonly CurvePoint[]; readonly resistance: Ohms | undefined },
+): Slope | undefined {
+  const { resistance = 0 } = curve;
+  const { instrument, leads } = moduleVoltageErrors(evidence.header);
+  const deviation = usualDeviation(curve.held, instrument.resolution);
+  const explained = 2 * resistance * Math.abs(dropped - held) + 2 * widest * deviation;
+  if (resistance <= 0 || fall > explained) return undefined;
+  return { scatter: (widest * deviation) / resistance, leads: leads / resistance };
+}
+
+function noteOf({ held, dropped, heldAbove }: DropoutBracket, slope: Slope | undefined): string {
+  const between =
+    `held ${formatQuantity(held, 'current', { significant: 4 })}, ` +
+    `dropped ${formatQuantity(dropped, 'current', { significant: 4 })}`;
+  const sinks = slope === undefined ? '' : '; the voltage sinks there, it does not break down';
+  const moved = heldAbove !== undefined && heldAbove >= 2 * (slope?.scatter ?? 0);
+  return `${between}${sinks}${moved ? '; it had held more before: the limit came down meanwhile' : ''}`;
+}
+
+/** Of single readings; never less than the last digit hides. */
+function usualDeviation(held: readonly CurvePoint[], resolution: Volts): Volts {
+  const deviations = held.flatMap(({ deviation }) => (deviation === undefined ? [] : [deviation]));
+  return deviations.length === 0 ? resolution : Math.max(median(deviations), resolution);
 }

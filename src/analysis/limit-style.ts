@@ -1,4 +1,5 @@
-import type { Amperes, Volts } from '../quantity/quantity.js';
+import type { Amperes, Ohms, Volts } from '../quantity/quantity.js';
+import { mean } from '../statistics/checked.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence, StepEvidence } from './evidence.js';
 import { type Finding, inWords } from './finding.js';
@@ -10,7 +11,8 @@ import { type Finding, inWords } from './finding.js';
  * - latch-off: after the overload the voltage stayed away.
  * - hiccup: the samples change between a current of the limit's size and next to none; or there was no
  *   current at any time and the module came back by itself.
- * - constant-power: the set current went on flowing, and the voltage fell in proportion: V·I as at the dropout.
+ * - constant-power: the set current went on flowing, and the voltage fell in proportion: V·I as at the
+ *   dropout. Not where the droop alone explains most of the fall: then no limit was met yet.
  * - constant-current: the current stayed within a tenth of the dropout current, the voltage collapsed.
  * - foldback: a steady current clearly below the dropout current, the voltage collapsed.
  *
@@ -18,14 +20,19 @@ import { type Finding, inWords } from './finding.js';
  */
 export function limitStyleFindings(
   evidence: Evidence,
-  dropout: Amperes | undefined,
-  openCircuit: Volts | undefined,
+  found: {
+    readonly dropout: Amperes | undefined;
+    readonly openCircuit: Volts | undefined;
+    readonly droop: Ohms | undefined;
+  },
 ): readonly Finding[] {
+  const { dropout, openCircuit, droop = 0 } = found;
   if (dropout === undefined || openCircuit === undefined) return [];
   for (const step of stepsOf(evidence, 'dropout-search')) {
-    const overload = step.points.find((point) => point.phase === 'overload' && point.samples.length >= 3);
+    const watched = step.points.filter((point) => point.phase === 'overload').map(overloadOf);
+    const overload = watched.find(({ samples }) => samples.length >= fewestSamples);
     if (overload === undefined) continue;
-    const { style, because } = styleOf(step, overload, dropout, openCircuit);
+    const { style, because } = styleOf(step, overload, { dropout, openCircuit, droop });
     return [inWords('limit-style', style, { step: step.step, note: because })];
   }
   return [];
@@ -37,14 +44,33 @@ interface Verdict {
   readonly because: string;
 }
 
+interface Module {
+  readonly dropout: Amperes;
+  readonly openCircuit: Volts;
+  readonly droop: Ohms;
+}
+
+/** What was watched of an overload: the samples in which both voltage and current could be read. */
+interface Overload {
+  readonly set: Amperes;
+  readonly samples: PointEvidence['samples'];
+}
+
+const fewestSamples = 3;
 const collapsed = 0.5;
 const nothing = 0.05;
 const limitSized = 0.4;
 
-function styleOf(step: StepEvidence, overload: PointEvidence, dropout: Amperes, openCircuit: Volts): Verdict {
-  const samples = overload.samples.filter(
-    ({ voltage, current }) => !Number.isNaN(voltage) && !Number.isNaN(current),
-  );
+function overloadOf({ set, samples }: PointEvidence): Overload {
+  return {
+    set: set.current ?? Number.NaN,
+    samples: samples.filter(({ voltage, current }) => Number.isFinite(voltage) && Number.isFinite(current)),
+  };
+}
+
+function styleOf(step: StepEvidence, overload: Overload, module: Module): Verdict {
+  const { samples } = overload;
+  const { dropout, openCircuit } = module;
   const share = (is: (sample: (typeof samples)[number]) => boolean): number =>
     samples.filter(is).length / samples.length;
   const recovered = step.recoveries.at(0)?.outcome;
@@ -60,30 +86,40 @@ function styleOf(step: StepEvidence, overload: PointEvidence, dropout: Amperes, 
   if (idle === 1 && recovered === 'came-back') {
     return { style: 'hiccup', because: 'under overload it gives nothing, and comes back by itself' };
   }
-  const mean = overload.current.mean;
-  const steady = overload.current.maximum - overload.current.minimum < 0.1 * dropout;
+  const currents = samples.map(({ current }) => current);
+  const current = mean(currents);
+  const steady = Math.max(...currents) - Math.min(...currents) < 0.1 * dropout;
   if (!steady)
     return { style: 'undetermined', because: 'the overload current was neither steady nor in pulses' };
-  if (gone === 0 && followsHyperbola(overload, dropout, openCircuit)) {
-    return { style: 'constant-power', because: 'under overload the voltage falls as the current grows' };
-  }
-  if (gone < 1) return { style: 'undetermined', because: 'the voltage sagged and did not collapse' };
-  if (Math.abs(mean - dropout) < 0.1 * dropout) {
+  if (gone === 0) return withoutCollapse(overload, module, current);
+  if (gone < 1)
+    return { style: 'undetermined', because: 'the voltage collapsed for a part of the time only' };
+  if (Math.abs(current - dropout) < 0.1 * dropout) {
     return { style: 'constant-current', because: 'under overload the current stays at the limit' };
   }
-  if (mean > nothing * dropout && mean < 0.9 * dropout) {
+  if (current > nothing * dropout && current < 0.9 * dropout) {
     return {
       style: 'foldback',
-      because: `under overload the current falls to ${Math.round((mean / dropout) * 100)} % of the limit`,
+      because: `under overload the current falls to ${Math.round((current / dropout) * 100)} % of the limit`,
     };
   }
   return { style: 'undetermined', because: 'no rule fits the overload' };
 }
 
-/** Within a twentieth of the power at the dropout, with the set current flowing. */
-function followsHyperbola(overload: PointEvidence, dropout: Amperes, openCircuit: Volts): boolean {
-  const set = overload.set.current ?? Number.NaN;
-  const power = overload.moduleVoltage.mean * overload.current.mean;
-  const flows = Math.abs(overload.current.mean - set) < 0.05 * set;
-  return flows && power < openCircuit * dropout * 1.05 && power > openCircuit * dropout * 0.85;
+/**
+ * The voltage sagged and stayed up, with the set current flowing or not. On the hyperbola means that the
+ * power is within about a tenth of that at the dropout, which lies some per cent below V0·I.
+ */
+function withoutCollapse({ set, samples }: Overload, module: Module, current: Amperes): Verdict {
+  const { dropout, openCircuit, droop } = module;
+  const voltage = mean(samples.map((sample) => sample.voltage));
+  const share = (voltage * current) / (openCircuit * dropout);
+  const flows = Math.abs(current - set) < 0.05 * set;
+  if (!flows || share >= 1.05 || share <= 0.85) {
+    return { style: 'undetermined', because: 'the voltage sagged and did not collapse' };
+  }
+  if (droop * current > (openCircuit - voltage) / 2) {
+    return { style: 'undetermined', because: 'the voltage sags by droop alone: no limit was met yet' };
+  }
+  return { style: 'constant-power', because: 'under overload the power stays what it was at the limit' };
 }

@@ -42,7 +42,8 @@ describe('the bracket of the dropout', () => {
       step: 1,
       held: expect.closeTo(flowing(5.2), 9) as number,
       dropped: expect.closeTo(flowing(5.3), 9) as number,
-      moved: false,
+      fall: expect.closeTo(15.21 - 0.018 * flowing(5.2) - 1.2, 9) as number,
+      heldAbove: undefined,
     });
   });
 
@@ -60,7 +61,7 @@ describe('the bracket of the dropout', () => {
     const points = [...(search.points ?? []), probe(5.2, 'dropped', 'return'), probe(5.1, 'held', 'return')];
     const evidence = evidenceOf([{ kind: 'dropout-search', points }]);
     expect(dropoutBracket(evidence)).toMatchObject({
-      moved: true,
+      heldAbove: expect.closeTo(0, 9) as number,
       held: expect.closeTo(flowing(5.1), 9) as number,
     });
     expect(dropoutOf([{ kind: 'dropout-search', points }])?.note).toContain('the limit came down meanwhile');
