@@ -11,7 +11,7 @@ import { recommendedFindings } from './recommended-current.js';
 import { recoveryFindings } from './recovery.js';
 import { regulationFindings } from './regulation.js';
 import { steadinessFindings } from './steadiness.js';
-import { usableFindings } from './usable-current.js';
+import { usableCurrent } from './usable-current.js';
 
 /**
  * Everything that a record's evidence shows, in the order in which a reader wants it. Pure: the same
@@ -39,10 +39,10 @@ export function analyse(evidence: Evidence): readonly Finding[] {
     openCircuit: numberNamed('open-circuit-voltage', [...idle, ...regulation]),
     droop,
   });
-  const usable = usableFindings(evidence, { dropout: dropout[0], unsteady: unsteady[0], held });
+  const usable = usableCurrent(evidence, { dropout: dropout[0], unsteady: unsteady[0], held });
   return [
-    ...usable,
-    ...recommendedFindings(evidence, usable[0]),
+    ...(usable === undefined ? [] : [usable.finding]),
+    ...recommendedFindings(evidence, usable),
     ...idle,
     ...regulation,
     ...onsetFindings(evidence, steady, knee),

@@ -1,26 +1,37 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Evidence } from './evidence.js';
 import type { Factor, Finding } from './finding.js';
+import type { Usable } from './usable-current.js';
+
+const because = {
+  limit: 'the measured limit sets it',
+  'highest-tried': 'the highest current that was tried sets it',
+} as const;
 
 /**
  * `recommended-current` for continuous use: the usable current's 95 % lower bound × margin × ambient
  * factor, and never above the nameplate. Each factor is a line with its reason.
  */
-export function recommendedFindings(evidence: Evidence, usable: Finding | undefined): readonly Finding[] {
+export function recommendedFindings(evidence: Evidence, usable: Usable | undefined): readonly Finding[] {
   const rated = evidence.header.modules[0]?.rated;
   if (usable === undefined || rated === undefined) return [];
-  if (usable.interval === null || typeof usable.value !== 'number') return [];
+  const { value, interval, step } = usable.finding;
+  if (interval === null || typeof value !== 'number') return [];
   const { margin } = evidence.header.derating;
-  const low = Math.max(0, usable.interval[0]);
+  const low = Math.max(0, interval[0]);
   const derated = low * margin;
   const capped = Math.min(derated, rated.current);
   const factors: Factor[] = [
     {
       name: 'lower bound',
-      factor: low / usable.value,
-      reason: `from the usable current to its 95 % lower bound, ${formatQuantity(low, 'current', { significant: 4 })}`,
+      factor: value > 0 ? low / value : 0,
+      reason: `down to the lower end of its 95 % interval, ${formatQuantity(low, 'current', { significant: 4 })}`,
     },
-    { name: 'margin', factor: margin, reason: 'asked for by the procedure, for ageing and warmer days' },
+    {
+      name: 'margin',
+      factor: margin,
+      reason: 'asked for by the procedure: for ageing, warmer days, and warming that no soak has measured',
+    },
     {
       name: 'ambient',
       factor: 1,
@@ -41,8 +52,8 @@ export function recommendedFindings(evidence: Evidence, usable: Finding | undefi
       dimension: 'current',
       standardUncertainty: null,
       interval: null,
-      step: usable.step,
-      note: derated > rated.current ? 'the nameplate sets it' : 'the measured limit sets it',
+      step,
+      note: derated > rated.current ? 'the nameplate sets it' : because[usable.setBy],
       budget: [],
       factors,
     },

@@ -23,7 +23,7 @@ export function recoveryFindings(evidence: Evidence): readonly Finding[] {
       'recovery-time',
       'time',
       (slowest.after + slowest.within) / 2,
-      [promised('between two looks', rectangular((slowest.within - slowest.after) / 2))],
+      [promised('between two looks', rectangular(Math.abs(slowest.within - slowest.after) / 2))],
       { step: slowest.step, note: noteOf(slowest, recoveries.length) },
     ),
   ];

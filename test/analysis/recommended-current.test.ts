@@ -1,0 +1,78 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { measured } from '../../src/analysis/finding.js';
+import { recommendedFindings } from '../../src/analysis/recommended-current.js';
+import type { Usable } from '../../src/analysis/usable-current.js';
+import { evidenceOf, headerOf } from './evidence-of.js';
+
+function usable(value: number, uncertainty: number, setBy: Usable['setBy'] = 'limit'): Usable {
+  const budget = [{ name: 'all', kind: 'B', uncertainty, degreesOfFreedom: Infinity }] as const;
+  return { finding: measured('usable-current', 'current', value, budget, { step: 3 }), setBy };
+}
+
+function recommended(from: Usable, rated = 4, margin = 0.8) {
+  const header = headerOf({ rated: { voltage: 15, current: rated }, margin });
+  const found = recommendedFindings(evidenceOf([], header), from)[0];
+  if (found === undefined) throw new Error('nothing recommended');
+  return found;
+}
+
+describe('the recommended current', () => {
+  it('is the lower end of the usable current times the margin', () => {
+    // 1.96 × 0.05 A below 4 A, of that four fifths.
+    const found = recommended(usable(4, 0.05));
+    expect(found.value).toBeCloseTo((4 - 1.959964 * 0.05) * 0.8, 6);
+    expect(found.note).toBe('the measured limit sets it');
+    expect(found.factors.map(({ name }) => name)).toEqual(['lower bound', 'margin', 'ambient']);
+  });
+
+  it('is never above the nameplate, and says that the nameplate sets it', () => {
+    const found = recommended(usable(6, 0.05));
+    expect(found.value).toBe(4);
+    expect(found.note).toBe('the nameplate sets it');
+    expect(found.factors.at(-1)).toMatchObject({
+      name: 'nameplate',
+      reason: "never above the nameplate's 4 A",
+    });
+  });
+
+  it('says that only the highest current tried sets it, where no limit was met', () => {
+    expect(recommended(usable(4, 0.01, 'highest-tried')).note).toBe(
+      'the highest current that was tried sets it',
+    );
+  });
+
+  it('gives the reason of every factor, and that no soak and no ambient line stand behind it', () => {
+    const { factors } = recommended(usable(6, 0.05));
+    expect(factors.every(({ reason }) => reason.length > 10)).toBe(true);
+    expect(factors[1]?.reason).toContain('no soak');
+    expect(factors[2]).toMatchObject({ name: 'ambient', factor: 1 });
+  });
+
+  it('is the usable current times all of its factors, and never above nameplate or lower bound', () => {
+    const amperes = fc.double({ min: 0.05, max: 60, noNaN: true });
+    const uncertainties = fc.double({ min: 0, max: 5, noNaN: true });
+    const margins = fc.double({ min: 0.1, max: 1, noNaN: true });
+    fc.assert(
+      fc.property(amperes, uncertainties, amperes, margins, (value, uncertainty, rated, margin) => {
+        const from = usable(value, uncertainty);
+        const found = recommended(from, rated, margin);
+        const product = found.factors.reduce((product, { factor }) => product * factor, value);
+        expect(product).toBeCloseTo(Number(found.value), 10);
+        expect(found.value).toBeLessThanOrEqual(rated);
+        expect(found.value).toBeLessThanOrEqual(Math.max(0, from.finding.interval?.[0] ?? NaN));
+        expect(found.value).toBeGreaterThanOrEqual(0);
+      }),
+    );
+  });
+
+  it.each([0, -0.01])('is nothing, in numbers, for a usable current of %d A', (value) => {
+    const found = recommended(usable(value, 0.01));
+    expect(found.value).toBe(0);
+    expect(found.factors.map(({ factor }) => factor)).toEqual([0, 0.8, 1]);
+  });
+
+  it('is not there without a usable current', () => {
+    expect(recommendedFindings(evidenceOf([]), undefined)).toEqual([]);
+  });
+});

@@ -1,0 +1,53 @@
+import { describe, expect, it } from 'vitest';
+import { latched, recoveryFindings } from '../../src/analysis/recovery.js';
+import { evidenceOf, type Recovered } from './evidence-of.js';
+
+const after = (...recoveries: readonly Recovered[]) => evidenceOf([{ kind: 'dropout-search', recoveries }]);
+
+describe('the recovery time', () => {
+  it('is between the last look without the voltage and the first with it, of the slowest', () => {
+    const [found] = recoveryFindings(
+      after(['came-back', 0, 0.06], ['came-back', 0.5, 0.7], ['came-back', 0.3, 0.4]),
+    );
+    expect(found).toMatchObject({
+      name: 'recovery-time',
+      dimension: 'time',
+      step: 1,
+      note: 'the slowest of 3',
+    });
+    expect(found?.value).toBeCloseTo(0.6, 12);
+    expect(found?.standardUncertainty).toBeCloseTo(0.1 / Math.sqrt(3), 12);
+  });
+
+  it('says that the voltage was back before anyone looked', () => {
+    const [found] = recoveryFindings(after(['came-back', 0, 0.06]));
+    expect(found?.note).toBe('one recovery; back before the first look');
+    expect(found?.value).toBeCloseTo(0.03, 12);
+  });
+
+  it('is not there for a module that stayed off, or came back only when its input was cycled', () => {
+    expect(recoveryFindings(after(['stayed-off', 10, 10], ['came-back-after-cycling', 1, 1.1]))).toEqual([]);
+    expect(recoveryFindings(after())).toEqual([]);
+  });
+
+  it('does not throw at a record made elsewhere that has the two looks the other way round', () => {
+    expect(recoveryFindings(after(['came-back', 0.7, 0.5]))[0]?.value).toBeCloseTo(0.6, 12);
+  });
+});
+
+describe('a module that latches off', () => {
+  it.each([
+    [[], false],
+    [[['came-back', 0, 0.1]], false],
+    [[['stayed-off', 10, 10]], true],
+    [
+      [
+        ['came-back', 0, 0.1],
+        ['came-back-after-cycling', 1, 1.1],
+      ],
+      true,
+    ],
+  ] as [readonly Recovered[], boolean][])('is told by its recoveries: %j', (recoveries, expected) => {
+    expect(latched(after(...recoveries))).toBe(expected);
+  });
+});
