@@ -1,4 +1,5 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Volts } from '../quantity/quantity.js';
 import { fitLine } from '../statistics/line-fit.js';
 import { studentTDistribution } from '../statistics/student-t.js';
 import { stepsOf } from './curve.js';
@@ -27,7 +28,7 @@ export function openCircuitFindings(evidence: Evidence): readonly Finding[] {
         promised(`${instrument.of}, offset`, instrument.offset),
         promised(`${instrument.of}, resolution`, instrument.resolution),
       ],
-      { step: step.step, note: driftNote(points) },
+      { step: step.step, note: driftNote(points, 2 * Math.sqrt(3) * instrument.resolution) },
     ),
   ];
 }
@@ -53,17 +54,24 @@ function spread(points: readonly PointEvidence[], mean: number): Finding['budget
   };
 }
 
-/** A slope of voltage over time that chance would give less than once in a hundred. */
-function driftNote(points: readonly PointEvidence[]): string {
+/** A drift that chance gives less often than this is told, if it moved more than the meter's last digit. */
+const strictLevel = 1e-3;
+
+function driftNote(points: readonly PointEvidence[], resolution: Volts): string {
   if (points.length < 4) return '';
+  const times = points.map((point) => point.t);
+  const duration = Math.max(...times) - Math.min(...times);
+  if (duration === 0) return '';
   const fit = fitLine(
-    points.map((point) => point.t),
+    times,
     points.map((point) => point.moduleVoltage.mean),
   );
-  if (fit.slopeUncertainty === 0) return '';
+  if (Math.abs(fit.slope) * duration <= resolution) return '';
   const chance =
-    2 * (1 - studentTDistribution(Math.abs(fit.slope / fit.slopeUncertainty), fit.degreesOfFreedom));
-  return chance < 0.01
-    ? `drifts by ${formatQuantity(fit.slope * 3600, 'voltage-rate', { significant: 2 })}`
+    fit.slopeUncertainty === 0
+      ? 0
+      : 2 * studentTDistribution(-Math.abs(fit.slope / fit.slopeUncertainty), fit.degreesOfFreedom);
+  return chance < strictLevel
+    ? `drifted by ${formatQuantity(fit.slope * duration, 'voltage', { significant: 2 })} in ${formatQuantity(duration, 'time', { significant: 2 })}`
     : '';
 }
