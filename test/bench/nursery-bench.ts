@@ -8,6 +8,7 @@ import { readBench } from '../../src/files/read-bench.js';
 import { readDriver } from '../../src/files/read-driver.js';
 import type { SimulatedModule, Simulation } from '../../src/files/simulation-section.js';
 import type { Connection } from '../../src/instrument/connection.js';
+import { VirtualLine } from '../instrument/fixtures/virtual-line.js';
 import { type OpenedSimulation, openSimulation } from '../../src/simulation/open-simulation.js';
 
 const fromHere = (path: string): string => fileURLToPath(new URL(path, import.meta.url));
@@ -23,6 +24,8 @@ export interface NurseryChange {
   readonly bench?: Partial<Bench>;
   readonly load?: Partial<Driver>;
   readonly meter?: Partial<Driver>;
+  /** What the meter answers to READ? whatever is at its probes. */
+  readonly meterReads?: string;
   readonly onInput?: InputListener;
   readonly onNotice?: (text: string) => void;
 }
@@ -63,7 +66,10 @@ export async function nursery(change: NurseryChange = {}): Promise<Nursery> {
         drivers,
         clock,
         connect: (_address, _driver, role) => {
-          const line = opened.connect(role, role === 'load' ? there.load : there.meter);
+          const line =
+            role === 'meter' && change.meterReads !== undefined
+              ? stubborn(clock, change.meterReads)
+              : opened.connect(role, role === 'load' ? there.load : there.meter);
           lines.push(line);
           return Promise.resolve(line);
         },
@@ -71,6 +77,19 @@ export async function nursery(change: NurseryChange = {}): Promise<Nursery> {
         onNotice: change.onNotice ?? (() => undefined),
       }),
   };
+}
+
+/** A meter at the end of a line that gives one reading only. */
+function stubborn(clock: VirtualClock, reading: string): Connection {
+  const answers: Readonly<Record<string, string>> = {
+    '*IDN?': 'NURSERY,METER,K,1',
+    'SYST:ERR?': '0,"No error"',
+    'READ?': reading,
+  };
+  return new VirtualLine(clock, (message, at) => {
+    const answer = answers[message];
+    return answer === undefined ? [] : [{ at: at + 0.02, bytes: Buffer.from(`${answer}\n`) }];
+  });
 }
 
 function described(bench: Bench, change: NurseryChange): Bench {

@@ -1,0 +1,66 @@
+import { describe, expect, it } from 'vitest';
+import { exactInstruments } from '../bench/nursery-bench.js';
+import { stage } from './one-step.js';
+
+describe('the load ramp', () => {
+  it('takes its points evenly from the first to the last current, shares worked out', async () => {
+    const { perform, the, simulation } = await stage();
+    await perform('load-ramp', { to: '100 % of rated-current', points: 5, dwell: '100 ms', readings: 2 });
+    expect(the('point-began').map(({ set, phase }) => [set.current, phase])).toEqual([
+      [0, 'ramp'],
+      [1, 'ramp'],
+      [2, 'ramp'],
+      [3, 'ramp'],
+      [4, 'ramp'],
+    ]);
+    expect(the('point-ended').map(({ outcome }) => outcome)).toEqual(Array(5).fill('held'));
+    expect(the('notice')).toEqual([]);
+    expect(simulation.world.load).toMatchObject({ input: 'off', setCurrent: 0 });
+  });
+
+  it('goes downwards when it is told to', async () => {
+    const { perform, the } = await stage();
+    await perform('load-ramp', { from: '2 A', to: '1 A', points: 3, readings: 2 });
+    expect(the('point-began').map(({ set }) => set.current)).toEqual([2, 1.5, 1]);
+  });
+
+  it.each(['nursery', 'nursery-foldback', 'nursery-constant-current', 'nursery-latch-off'])(
+    'ends where the module of the bench %s gives up, says so, and unloads it',
+    async (file) => {
+      const { perform, the, simulation } = await stage({
+        file,
+        simulation: { instruments: exactInstruments },
+      });
+      await perform('load-ramp', { from: '4 A', to: '8 A', points: 9, dwell: '300 ms', readings: 3 });
+      expect(the('point-began').map(({ set }) => set.current)).toEqual([4, 4.5, 5, 5.5]);
+      expect(the('point-ended').map(({ outcome }) => outcome)).toEqual(['held', 'held', 'held', 'dropped']);
+      expect(the('notice').map(({ text }) => text)).toEqual([
+        'the module did not hold this point; the ramp ends here',
+      ]);
+      // The dropout is not prolonged: one sample was enough.
+      expect(the('reading').filter(({ point }) => point === 4)).toHaveLength(3);
+      expect(the('input').map(({ state }) => state)).toEqual(['on', 'off']);
+      expect(simulation.world.load).toMatchObject({ input: 'off', setCurrent: 0 });
+    },
+  );
+
+  it('ends where the module has sagged as far as was allowed', async () => {
+    const { perform, the } = await stage({
+      simulation: { instruments: exactInstruments },
+      module: { droopResistance: 0.3 },
+      known: { 'open-circuit-voltage': 15.21 },
+    });
+    await perform('load-ramp', { to: '4 A', points: 9, readings: 2, sag: '5 %' });
+    // 5 % of 15.21 V over 0.3 Ω is 2.5 A.
+    expect(the('point-began').map(({ set }) => set.current)).toEqual([0, 0.5, 1, 1.5, 2, 2.5, 3]);
+  });
+
+  it('asks the load for no more than the bench allows, and stops the run at that', async () => {
+    const { perform, the, simulation } = await stage({ limits: { current: 3 } });
+    await expect(perform('load-ramp', { to: '4 A', points: 5, readings: 2 })).rejects.toMatchObject({
+      code: 'BEYOND_CEILING',
+    });
+    expect(simulation.world.load.setCurrent).toBe(3);
+    expect(the('point-ended')).toHaveLength(4);
+  });
+});
