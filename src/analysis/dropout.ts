@@ -1,12 +1,12 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Ohms, Ratio, Volts } from '../quantity/quantity.js';
 import { median } from '../statistics/checked.js';
-import { fitLine } from '../statistics/line-fit.js';
 import { rectangular } from '../statistics/uncertainty-budget.js';
 import { heldPoints, stepsOf, type CurvePoint } from './curve.js';
 import type { Evidence, StepEvidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
 import { moduleVoltageErrors, promised, promisedErrors } from './promised-errors.js';
+import { soundLine } from './sound-line.js';
 
 /** Between what the module held and where it dropped out, as currents that really flowed. */
 export interface DropoutBracket {
@@ -75,11 +75,11 @@ function bracketOf(step: StepEvidence, inRecord: readonly CurvePoint[]): readonl
 function readBackLine(held: readonly CurvePoint[]): (set: Amperes) => Amperes {
   const sets = held.map((point) => point.set);
   if (new Set(sets).size >= 3) {
-    const fit = fitLine(
+    const fit = soundLine(
       sets,
       held.map((point) => point.current),
     );
-    if (fit.slope > 0) return (set) => fit.intercept + fit.slope * set;
+    if (fit !== undefined && fit.slope > 0) return (set) => fit.intercept + fit.slope * set;
   }
   const nearest = held.at(-1);
   return (set) => (nearest === undefined ? set : set + (nearest.current - nearest.set));

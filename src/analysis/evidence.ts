@@ -48,6 +48,8 @@ export interface PointEvidence {
 type Growing<T> = { -readonly [Key in keyof T]: T[Key] extends readonly (infer Item)[] ? Item[] : T[Key] };
 
 const mostSamples = 500;
+/** A journal made elsewhere may hold this and more: it is overload or no number, and never a value (SCPI-99). */
+const overload = 9.9e37;
 
 /** Takes the events of a journal one after the other; memory grows with the points, not with the readings. */
 export class EvidenceCollector {
@@ -129,14 +131,14 @@ export class EvidenceCollector {
     this.#readings += 1;
     const point = this.#point;
     if (point === undefined) return;
-    const number = value ?? Number.NaN;
+    const number = value !== null && Math.abs(value) < overload ? value : Number.NaN;
     if (of === 'meter' && what === 'voltage') this.#meterVoltage = number;
     if (of === 'load' && what === 'voltage') this.#loadVoltage = number;
     if (of !== 'load' || what !== 'current') return;
     const voltage = this.#moduleVoltage(number);
-    addIfNumber(point.moduleVoltage, voltage);
-    addIfNumber(point.loadVoltage, this.#loadVoltage);
-    addIfNumber(point.current, number);
+    addIfValue(point.moduleVoltage, voltage);
+    addIfValue(point.loadVoltage, this.#loadVoltage);
+    addIfValue(point.current, number);
     if (point.phase === 'overload' && point.samples.length < mostSamples) {
       point.samples.push({ voltage, current: number });
     }
@@ -156,9 +158,8 @@ export class EvidenceCollector {
   }
 }
 
-/** A journal made elsewhere may hold 1e999, which JSON reads as infinite. */
-function addIfNumber(moments: RunningMoments, value: number): void {
-  if (Number.isFinite(value)) moments.add(value);
+function addIfValue(moments: RunningMoments, value: number): void {
+  if (!Number.isNaN(value)) moments.add(value);
 }
 
 function newPoint({ point, phase, set }: PointBegan, t: Seconds): Growing<PointEvidence> {

@@ -1,6 +1,6 @@
 import type { Evidence, PointEvidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
-import { lineOverCurrent } from './line-over-current.js';
+import { lineOverCurrent } from './sound-line.js';
 import { promised, promisedErrors } from './promised-errors.js';
 import { stepsOf } from './curve.js';
 

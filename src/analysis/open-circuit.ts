@@ -1,11 +1,11 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
-import { fitLine } from '../statistics/line-fit.js';
 import { studentTDistribution } from '../statistics/student-t.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
 import { moduleVoltageErrors, promised } from './promised-errors.js';
+import { soundLine } from './sound-line.js';
 
 /**
  * The open-circuit voltage: the mean of the idle points, with the spread between points as Type A and the
@@ -61,12 +61,11 @@ function driftNote(points: readonly PointEvidence[], resolution: Volts): string 
   if (points.length < 4) return '';
   const times = points.map((point) => point.t);
   const duration = Math.max(...times) - Math.min(...times);
-  if (duration === 0) return '';
-  const fit = fitLine(
+  const fit = soundLine(
     times,
     points.map((point) => point.moduleVoltage.mean),
   );
-  if (Math.abs(fit.slope) * duration <= resolution) return '';
+  if (fit === undefined || Math.abs(fit.slope) * duration <= resolution) return '';
   const chance =
     fit.slopeUncertainty === 0
       ? 0

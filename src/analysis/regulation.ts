@@ -3,7 +3,7 @@ import type { LineFit } from '../statistics/line-fit.js';
 import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
-import { lineOverCurrent } from './line-over-current.js';
+import { lineOverCurrent } from './sound-line.js';
 import { moduleVoltageErrors, promised, promisedErrors } from './promised-errors.js';
 
 /** The line may be stretched by this part beyond its last point to reach the rated current. */

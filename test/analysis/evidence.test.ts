@@ -39,11 +39,20 @@ describe('the evidence of a journal', () => {
     expect(moduleVoltage.mean).toBe(15.1);
   });
 
-  it('takes nothing for a number without end, which a journal made elsewhere may hold', () => {
-    const endless = JSON.parse('1e999') as number;
-    const { moduleVoltage, current } = onlyPoint({ set: 2, samples: [{ meter: endless, current: endless }] });
-    expect([moduleVoltage.count, current.count]).toEqual([0, 0]);
-  });
+  // Source: SCPI-1999, volume 1: 9.9E37 is infinity and 9.91E37 is not a number (fixtures/reference/scpi-488.json).
+  it.each(['1e999', '9.9e37', '-9.9e37', '9.91e37'])(
+    'takes nothing for %s, which a journal made elsewhere may hold',
+    (text) => {
+      const value = JSON.parse(text) as number;
+      const { moduleVoltage, current, samples } = onlyPoint({
+        phase: 'overload',
+        set: 2,
+        samples: [{ meter: value, current: value }],
+      });
+      expect([moduleVoltage.count, current.count]).toEqual([0, 0]);
+      expect(samples).toEqual([{ voltage: Number.NaN, current: Number.NaN }]);
+    },
+  );
 
   it('does not lend the reading of a broken-off sample to the next point', () => {
     const events: readonly TimedEvent[] = [
