@@ -49,10 +49,16 @@ export class TerminalOperator implements Operator {
 
   /** At the end of the input a question would never be answered, so that is taken as a wish to stop. */
   async #question(text: string, signal: AbortSignal): Promise<string> {
+    const { input, output } = this.#terminal;
+    if (input.readableEnded || input.destroyed) throw closedAtQuestion();
     const closed = new AbortController();
-    const lines = createInterface({ input: this.#terminal.input, output: this.#terminal.output });
+    const lines = createInterface({ input, output });
     lines.once('close', () => {
-      closed.abort(new StoppedByOperator('the terminal was closed at a question'));
+      closed.abort(closedAtQuestion());
+    });
+    // A terminal that is gone reports an error, which must not end the program with the load on.
+    lines.on('error', () => {
+      closed.abort(closedAtQuestion());
     });
     lines.once('SIGINT', () => {
       closed.abort(new StoppedByOperator('stopped with Ctrl-C at a question'));
@@ -67,4 +73,8 @@ export class TerminalOperator implements Operator {
       lines.close();
     }
   }
+}
+
+function closedAtQuestion(): StoppedByOperator {
+  return new StoppedByOperator('the terminal was closed at a question');
 }
