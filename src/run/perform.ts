@@ -3,6 +3,7 @@ import { makeSafe, type Safety } from '../bench/make-safe.js';
 import type { OpenBench } from '../bench/open-bench.js';
 import { checkInputIsOff, checkOpenCircuitVoltage } from '../bench/pre-flight.js';
 import type { Clock } from '../clock/clock.js';
+import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import type { JournalEvent } from '../record/journal-event.js';
 import type { Operator } from '../steps/operator.js';
 import type { Progress } from '../steps/step-kind.js';
@@ -45,8 +46,15 @@ export interface Performed {
 export async function perform(performance: Performance): Promise<Performed> {
   const ending = await attempt(performance);
   const safety = await makeSafe(performance.bench);
+  const { journal } = performance;
   try {
-    performance.journal.append({
+    if (safety.kind === 'unconfirmed') {
+      journal.append({
+        event: 'notice',
+        text: `it could not be confirmed that the load is off: ${safety.why}`,
+      });
+    }
+    journal.append({
       event: 'ended',
       how: ending.how,
       reason: ending.how === 'completed' ? null : ending.reason,
@@ -129,6 +137,6 @@ async function goThrough({
 
 function endingOf(thrown: unknown): Ending {
   const error = thrown instanceof Error ? thrown : new Error(String(thrown));
-  const stopped = (error as { exitCode?: unknown }).exitCode === 3;
+  const stopped = error instanceof RailproofError && error.exitCode === exitCodes.stopped;
   return { how: stopped ? 'stopped' : 'failed', reason: error.message, error };
 }
