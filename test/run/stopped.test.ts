@@ -1,0 +1,17 @@
+import { expect, it } from 'vitest';
+import { cautionTexts } from '../../src/run/cautions.js';
+import { cautions } from '../../src/files/procedure.js';
+import { OperatorAbsentError } from '../../src/run/stopped.js';
+
+it('a procedure that needs someone says for which steps, and that --yes is not enough', () => {
+  expect(new OperatorAbsentError(['step 2 (operator)', 'its cautions'])).toMatchObject({
+    exitCode: 64,
+    message:
+      'the procedure needs someone at the bench for step 2 (operator), its cautions and there is no terminal',
+    advice: 'run it in a terminal; --yes acknowledges cautions only',
+  });
+});
+
+it('every caution that a procedure can name has a text, in whole sentences', () => {
+  for (const name of cautions) expect(cautionTexts[name]).toMatch(/^[A-Z].*\.$/);
+});

@@ -1,0 +1,144 @@
+import { PassThrough } from 'node:stream';
+import { describe, expect, it } from 'vitest';
+import { StoppedByOperator } from '../../src/run/stopped.js';
+import { TerminalOperator } from '../../src/run/terminal-operator.js';
+
+/** A terminal with someone at it who types. */
+function terminal(facts: { readonly yes?: boolean; readonly isTTY?: boolean; readonly keys?: 'raw' } = {}) {
+  const input = Object.assign(new PassThrough(), { isTTY: facts.isTTY ?? true });
+  const output = new PassThrough();
+  // Only where the output is a terminal does the input give keys instead of lines.
+  if (facts.keys === 'raw') Object.assign(output, { isTTY: true, columns: 100 });
+  let text = '';
+  output.on('data', (chunk: Buffer) => {
+    text += chunk.toString();
+  });
+  const operator = new TerminalOperator({ input, output, yes: facts.yes ?? false });
+  return { input, output, operator, shown: () => text };
+}
+
+const never = new AbortController().signal;
+const text = 'The module is fed from the mains.';
+
+describe('a caution on a terminal', () => {
+  it.each([
+    ['yes', 'operator'],
+    ['y', 'operator'],
+    [' YES ', 'operator'],
+    ['no', 'refused'],
+    ['', 'refused'],
+    ['yes please', 'refused'],
+    ['ok', 'refused'],
+  ])('answered with "%s" is taken as %s', async (answer, taken) => {
+    const { input, operator, shown } = terminal();
+    const asked = operator.acknowledge('hot-surfaces', text, never);
+    input.write(`${answer}\n`);
+    expect(await asked).toBe(taken);
+    expect(shown()).toBe(`\nCaution, hot surfaces: ${text}\nUnderstood and taken care of? Type yes: `);
+  });
+
+  it('is shown and not asked for where --yes was given', async () => {
+    const { operator, shown } = terminal({ yes: true, isTTY: false });
+    expect(await operator.acknowledge('mains', text, never)).toBe('--yes');
+    expect(shown()).toBe(`\nCaution, mains: ${text}\nAcknowledged by --yes.\n`);
+  });
+});
+
+describe('an act on a terminal', () => {
+  it('is done when Enter is pressed', async () => {
+    const { input, operator, shown } = terminal();
+    const asked = operator.ask({ name: 'plug', text: 'Plug K1 in.', answer: 'done' }, never);
+    input.write('\n');
+    expect(await asked).toBe('done');
+    expect(shown()).toBe('\nPlug K1 in.\nPress Enter when it is done. ');
+  });
+
+  it('that asks for an answer gets it without the spaces around it', async () => {
+    const { input, operator, shown } = terminal();
+    const asked = operator.ask({ name: 'air', text: 'How warm is it?', answer: 'temperature' }, never);
+    input.write('  23 °C \n');
+    expect(await asked).toBe('23 °C');
+    expect(shown()).toBe('\nHow warm is it?\n> ');
+  });
+
+  it('can be followed by another on the same terminal', async () => {
+    const { input, operator } = terminal();
+    for (const answer of ['one', 'two', 'three']) {
+      const asked = operator.ask({ name: answer, text: answer, answer: 'text' }, never);
+      input.write(`${answer}\n`);
+      expect(await asked).toBe(answer);
+    }
+    expect(input.listenerCount('error')).toBe(0);
+  });
+});
+
+describe('a question on a terminal never hangs', () => {
+  const ask = (operator: TerminalOperator, signal = never): Promise<string> =>
+    operator.ask({ name: 'plug', text: 'Plug K1 in.', answer: 'done' }, signal);
+  const closed = {
+    code: 'STOPPED_BY_OPERATOR',
+    exitCode: 3,
+    message: 'the terminal was closed at a question',
+  };
+
+  it('when the input ends', async () => {
+    const { input, operator } = terminal();
+    const asked = ask(operator);
+    input.end();
+    await expect(asked).rejects.toMatchObject(closed);
+  });
+
+  it('when the input had ended before it was asked', async () => {
+    const { input, operator } = terminal();
+    input.end();
+    input.resume();
+    await new Promise((resolve) => input.once('end', resolve));
+    await expect(ask(operator)).rejects.toMatchObject(closed);
+    await expect(operator.acknowledge('mains', text, never)).rejects.toMatchObject(closed);
+  });
+
+  it('when the terminal goes away with an error', async () => {
+    const { input, operator } = terminal();
+    const asked = ask(operator);
+    input.destroy(Object.assign(new Error('read EIO'), { code: 'EIO' }));
+    await expect(asked).rejects.toMatchObject(closed);
+    await expect(ask(operator)).rejects.toMatchObject(closed);
+  });
+
+  it('when the run is stopped', async () => {
+    const { operator } = terminal();
+    const stop = new AbortController();
+    const asked = ask(operator, stop.signal);
+    const reason = new StoppedByOperator('stopped by a request to end (SIGTERM)');
+    stop.abort(reason);
+    await expect(asked).rejects.toBe(reason);
+    await expect(ask(operator, stop.signal)).rejects.toBe(reason);
+  });
+
+  it('when Ctrl-C is pressed, which comes as a key there', async () => {
+    const { input, operator } = terminal({ keys: 'raw' });
+    const asked = ask(operator);
+    input.write('\u0003');
+    await expect(asked).rejects.toMatchObject({
+      code: 'STOPPED_BY_OPERATOR',
+      message: 'stopped with Ctrl-C at a question',
+    });
+  });
+
+  it('when Ctrl-D is pressed on an empty line', async () => {
+    const { input, operator } = terminal({ keys: 'raw' });
+    const asked = ask(operator);
+    input.write('\u0004');
+    await expect(asked).rejects.toMatchObject(closed);
+  });
+});
+
+describe('someone is there', () => {
+  it('only where the input is a terminal', () => {
+    expect(terminal().operator.present).toBe(true);
+    expect(terminal({ isTTY: false }).operator.present).toBe(false);
+    expect(
+      new TerminalOperator({ input: new PassThrough(), output: new PassThrough(), yes: true }).present,
+    ).toBe(false);
+  });
+});
