@@ -28,3 +28,11 @@ export const findingNames = {
   'weakest-module': 'word',
   'float-voltage-of-*': 'voltage',
 } as const satisfies Record<string, Dimension | 'word'>;
+
+/** What a finding of that name measures; undefined for a name that is none of ours, as of an operator's answer. */
+export function dimensionOfFinding(name: string): Dimension | 'word' | undefined {
+  const names: Readonly<Record<string, Dimension | 'word'>> = findingNames;
+  if (Object.hasOwn(names, name)) return names[name];
+  const family = Object.keys(names).find((one) => one.endsWith('*') && name.startsWith(one.slice(0, -1)));
+  return family === undefined ? undefined : names[family];
+}

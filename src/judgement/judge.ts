@@ -1,8 +1,8 @@
 import { type Finding } from '../analysis/finding.js';
-import { formatQuantity, formatShare } from '../quantity/format-quantity.js';
-import type { Dimension, QuantityOrShare, ReferenceName } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
+import { effectiveDegreesOfFreedom } from '../statistics/effective-freedom.js';
 import { decide } from '../statistics/guarded-decision.js';
+import { type Limit, limitOf, limitInWords } from './limit.js';
 
 /** Whether a requirement on a finding is met, the uncertainty being on the safe side (JCGM 106, ILAC-G8). */
 export interface Decision {
@@ -17,14 +17,17 @@ export interface Decision {
 
 export type Outcome = 'conforms' | 'does-not-conform' | 'undecided';
 
-type Criterion = RunHeader['criteria'][number];
-
 /**
  * Decides each criterion of the record's procedure, with a guard band as wide as the expanded
  * uncertainty. A finding that was not made leaves its criterion undecided.
  */
 export function judge(header: RunHeader, findings: readonly Finding[]): readonly Decision[] {
-  return header.criteria.map((criterion) => decideOne(criterion, header, findings));
+  return header.criteria.map(({ finding: name, requirement }) => {
+    const finding = findings.find((one) => one.name === name);
+    return requirement.kind === 'is'
+      ? decideWord(name, requirement.word, finding)
+      : decideQuantity(name, requirement.kind, limitOf(requirement.value, header, findings), finding);
+  });
 }
 
 /** The worst of the decisions; a record without criteria is not judged. */
@@ -34,23 +37,45 @@ export function overall(decisions: readonly Decision[]): Outcome | 'not-judged' 
   return decisions.some((decision) => decision.outcome === 'undecided') ? 'undecided' : 'conforms';
 }
 
-function decideOne(criterion: Criterion, header: RunHeader, findings: readonly Finding[]): Decision {
-  const { finding: name, requirement } = criterion;
-  const finding = findings.find((one) => one.name === name);
-  if (requirement.kind === 'is') return decideWord(name, requirement.word, finding);
-  const limit = limitOf(requirement.value as QuantityOrShare, header, findings);
-  const words = `${requirement.kind === 'at-least' ? 'at least' : 'at most'} ${inWords(requirement.value as QuantityOrShare, limit, finding)}`;
+/**
+ * A limit that is a share of what was measured is itself uncertain. How it hangs together with the finding
+ * is not known here, so both uncertainties are taken as independent: instruments in common make that the
+ * cautious side.
+ */
+function decideQuantity(
+  name: string,
+  kind: 'at-least' | 'at-most',
+  limit: Limit,
+  finding: Finding | undefined,
+): Decision {
+  const requirement = `${kind === 'at-least' ? 'at least' : 'at most'} ${limitInWords(limit, name)}`;
   if (finding === undefined || typeof finding.value !== 'number')
-    return undecided(name, words, 'was not measured');
-  if (limit === undefined) return undecided(name, words, 'what it refers to was not measured');
-  const expanded = finding.interval === null ? 0 : (finding.interval[1] - finding.interval[0]) / 2;
+    return undecided(name, requirement, 'was not measured');
+  if (limit.value === undefined) return undecided(name, requirement, 'what it refers to was not measured');
   const decision = decide({
     value: finding.value,
-    standardUncertainty: finding.standardUncertainty ?? 0,
-    expanded,
-    requirement: { kind: requirement.kind, limit },
+    standardUncertainty: Math.hypot(finding.standardUncertainty ?? 0, limit.standardUncertainty),
+    expanded: Math.hypot(halfWidth(finding), limit.expanded),
+    requirement: { kind, limit: limit.value },
+    ...(limit.standardUncertainty === 0 ? freedomOf(finding) : {}),
   });
-  return { finding: name, requirement: words, ...decision, note: '' };
+  return {
+    finding: name,
+    requirement,
+    outcome: decision.outcome,
+    // A recommendation has no distribution to be within: it is a choice, made from a lower bound.
+    probability: finding.standardUncertainty === null ? null : decision.probability,
+    note: limit.standardUncertainty === 0 ? '' : 'the limit was measured too, and its uncertainty counts',
+  };
+}
+
+function halfWidth({ interval }: Finding): number {
+  return interval === null ? 0 : (interval[1] - interval[0]) / 2;
+}
+
+/** The probability goes by the same distribution as the interval. */
+function freedomOf({ budget }: Finding): { readonly degreesOfFreedom?: number } {
+  return budget.length === 0 ? {} : { degreesOfFreedom: effectiveDegreesOfFreedom(budget) };
 }
 
 function decideWord(name: string, word: string, finding: Finding | undefined): Decision {
@@ -63,27 +88,4 @@ function decideWord(name: string, word: string, finding: Finding | undefined): D
 
 function undecided(finding: string, requirement: string, note: string): Decision {
   return { finding, requirement, outcome: 'undecided', probability: null, note };
-}
-
-/** Shares refer to the nameplate, or to another finding of the same record. */
-function limitOf(
-  value: QuantityOrShare,
-  header: RunHeader,
-  findings: readonly Finding[],
-): number | undefined {
-  if (value.kind === 'absolute') return value.value;
-  const rated = header.modules[0]?.rated;
-  const nameplate: Partial<Record<ReferenceName, number | undefined>> = {
-    'rated-voltage': rated?.voltage,
-    'rated-current': rated?.current,
-  };
-  const whole = nameplate[value.of] ?? findings.find((finding) => finding.name === value.of)?.value;
-  return typeof whole === 'number' ? whole * value.ratio : undefined;
-}
-
-function inWords(value: QuantityOrShare, limit: number | undefined, finding: Finding | undefined): string {
-  const dimension: Dimension = finding?.dimension ?? 'ratio';
-  if (value.kind === 'absolute') return formatQuantity(value.value, dimension);
-  const share = formatShare(value, dimension);
-  return limit === undefined ? share : `${formatQuantity(limit, dimension)} (${share})`;
 }
