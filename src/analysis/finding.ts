@@ -10,6 +10,8 @@ export interface Finding {
   readonly standardUncertainty: number | null;
   /** 95 %, by Student's t at the effective degrees of freedom. */
   readonly interval: readonly [number, number] | null;
+  /** Set where the value is only a bound: `least` where nothing showed that it is not more. */
+  readonly bound?: 'least';
   /** The step whose readings it rests on, counted from 1. */
   readonly step: number | null;
   /** What a reader must know besides; empty when there is nothing. */

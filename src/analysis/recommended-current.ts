@@ -30,7 +30,7 @@ export function recommendedFindings(evidence: Evidence, usable: Usable | undefin
     {
       name: 'margin',
       factor: margin,
-      reason: 'asked for by the procedure: for ageing, warmer days, and warming that no soak has measured',
+      reason: 'asked for by the procedure: ageing, warmer days, and warming that no soak measured',
     },
     {
       name: 'ambient',
@@ -53,6 +53,7 @@ export function recommendedFindings(evidence: Evidence, usable: Usable | undefin
       standardUncertainty: null,
       interval: null,
       step,
+      ...(usable.setBy === 'highest-tried' && derated <= rated.current ? { bound: 'least' as const } : {}),
       note: derated > rated.current ? 'the nameplate sets it' : because[usable.setBy],
       budget: [],
       factors,

@@ -61,5 +61,5 @@ function highestHeld(evidence: Evidence, held: readonly CurvePoint[], latch: str
     ],
     { step: highest.step, note: `at least this much: no limit was met up to ${tried}${latch}` },
   );
-  return { finding, setBy: 'highest-tried' };
+  return { finding: { ...finding, bound: 'least' }, setBy: 'highest-tried' };
 }

@@ -52,19 +52,23 @@ function decideQuantity(
   if (finding === undefined || typeof finding.value !== 'number')
     return undecided(name, requirement, 'was not measured');
   if (limit.value === undefined) return undecided(name, requirement, 'what it refers to was not measured');
-  const decision = decide({
+  const shown = decide({
     value: finding.value,
     standardUncertainty: Math.hypot(finding.standardUncertainty ?? 0, limit.standardUncertainty),
     expanded: Math.hypot(halfWidth(finding), limit.expanded),
     requirement: { kind, limit: limit.value },
     ...(limit.standardUncertainty === 0 ? freedomOf(finding) : {}),
   });
+  // A least value can show that there is enough, and that there is too much, but neither of their opposites.
+  const unproven = kind === 'at-least' ? 'does-not-conform' : 'conforms';
+  if (finding.bound === 'least' && shown.outcome === unproven)
+    return undecided(name, requirement, 'it may be more: no limit was met');
   return {
     finding: name,
     requirement,
-    outcome: decision.outcome,
+    outcome: shown.outcome,
     // A recommendation has no distribution to be within: it is a choice, made from a lower bound.
-    probability: finding.standardUncertainty === null ? null : decision.probability,
+    probability: finding.standardUncertainty === null ? null : shown.probability,
     note: limit.standardUncertainty === 0 ? '' : 'the limit was measured too, and its uncertainty counts',
   };
 }

@@ -110,6 +110,19 @@ describe('a requirement on a finding', () => {
     expect(decide(atLeast(4.1), [recommended], 'recommended-current').outcome).toBe('does-not-conform');
   });
 
+  it.each([
+    [atLeast(4), 'undecided'],
+    [atLeast(2), 'conforms'],
+    [atMost(4), 'undecided'],
+    [atMost(2), 'does-not-conform'],
+  ] as const)('%j on a least value of 2.2 A, from a ramp that was cut short: %s', (requirement, outcome) => {
+    const least = { ...finding('usable-current', 2.2, 0.01), bound: 'least' } as const;
+    const decision = decide(requirement, [least]);
+    expect(decision.outcome).toBe(outcome);
+    if (outcome !== 'undecided') return;
+    expect(decision).toMatchObject({ probability: null, note: 'it may be more: no limit was met' });
+  });
+
   it('is decided where the reference is none of ours, as far as it goes', () => {
     const strange = decide(share('at-least', 1, 'moon-phase'), [finding('usable-current', 5, 0.01)]);
     expect(strange.outcome).toBe('undecided');
