@@ -34,8 +34,7 @@ export function resultAsJson(result: Result): object {
 
 function findingAsJson(finding: Finding): object {
   const { dimension, interval, standardUncertainty } = finding;
-  const inUnit = (value: number): number =>
-    dimension === null ? value : toJsonUnit(value, dimension);
+  const inUnit = (value: number): number => (dimension === null ? value : toJsonUnit(value, dimension));
   return {
     name: finding.name,
     value: typeof finding.value === 'number' ? inUnit(finding.value) : finding.value,

@@ -1,12 +1,15 @@
 import type { Finding } from '../analysis/finding.js';
 import type { Decision } from '../judgement/judge.js';
 import { formatQuantity, formatUncertain, type UncertainText } from '../quantity/format-quantity.js';
+import type { Amperes } from '../quantity/quantity.js';
 import { alignTable } from './align.js';
+import { printableData } from './printable.js';
 import { endedHow, type Result } from './result.js';
 import type { Style } from './style.js';
 
 /** The report for a terminal or a text file: the answer first, then what it rests on. */
-export function resultAsText(result: Result, style: Style): string {
+export function resultAsText(recorded: Result, style: Style): string {
+  const result = withPrintableTexts(recorded);
   return [
     heading(result, style),
     ...warnings(result, style),
@@ -19,6 +22,15 @@ export function resultAsText(result: Result, style: Style): string {
     .filter((part) => part !== '')
     .join('\n\n')
     .concat('\n');
+}
+
+/** Of the evidence, only the way it ended is shown; its points may be many and are left alone. */
+function withPrintableTexts({ evidence, header, ...rest }: Result): Result {
+  return {
+    ...printableData(rest),
+    header: printableData({ ...header, steps: [], files: [] }),
+    evidence: { ...evidence, ended: printableData(evidence.ended) },
+  };
 }
 
 function heading({ header, run }: Result, style: Style): string {
@@ -45,22 +57,33 @@ function warnings(result: Result, style: Style): string[] {
       `DAMAGED RECORD: line ${integrity.line} of the journal: ${integrity.problem}. What follows rests on the first ${integrity.lines} lines.`,
     );
   }
-  if (how === 'cut-off')
+  if (how === 'cut-off' && integrity.kind !== 'damaged')
     lines.push('CUT OFF: the record ends without an end; what follows is what is whole.');
   if (how === 'stopped') lines.push(`STOPPED: ${reason ?? ''}`);
   if (how === 'failed') lines.push(`FAILED: ${reason ?? ''}`);
   return lines.map((line) => style.warn(line));
 }
 
-function answer({ findings }: Result, style: Style): string {
+function answer(result: Result, style: Style): string {
+  const { findings } = result;
   const recommended = findings.find((finding) => finding.name === 'recommended-current');
   const usable = findings.find((finding) => finding.name === 'usable-current');
   if (recommended === undefined || usable === undefined) return '';
-  const continuous = formatQuantity(Number(recommended.value), 'current', { significant: 3 });
+  const current = Number(recommended.value);
+  const advice = current > 0 ? `load it continuously with up to ${roundedDown(current)}` : 'do not load it';
+  const sentence = endedHow(result).how === 'completed' ? advice : `as far as the run went, ${advice}`;
   return [
-    style.strong(`Load it continuously with up to ${continuous}.`),
+    style.strong(`${sentence.charAt(0).toUpperCase()}${sentence.slice(1)}.`),
     `It delivers ${inOneLine(usable)}; ${usable.note}.`,
   ].join('\n');
+}
+
+/** To three digits, and never up: a recommendation must not grow by being written. */
+function roundedDown(current: Amperes): string {
+  const step = 10 ** (Math.floor(Math.log10(current)) - 2);
+  // A whole number of steps is not made one less by what dividing loses.
+  const down = Math.floor(current / step + 1e-9) * step;
+  return formatQuantity(down, 'current', { significant: 3 });
 }
 
 function findingsTable({ findings }: Result, style: Style): string {
@@ -124,7 +147,7 @@ function decisionsTable({ decisions }: Result, style: Style): string {
     verdicts[outcome],
     finding,
     requirement,
-    [probability === null ? '' : `conforms with a probability of ${percent(probability)}`, note]
+    [probability === null ? '' : `conformance probability ${percent(probability)}`, note]
       .filter((part) => part !== '')
       .join('; '),
   ]);
@@ -137,8 +160,8 @@ function decisionsTable({ decisions }: Result, style: Style): string {
 
 /** Never 100 % and never 0 %: nothing measured is that sure. */
 function percent(probability: number): string {
-  if (probability > 0.999) return 'more than 99.9 %';
-  if (probability < 0.001) return 'less than 0.1 %';
+  if (probability > 0.999) return 'above 99.9 %';
+  if (probability < 0.001) return 'below 0.1 %';
   return `${(probability * 100).toFixed(1)} %`;
 }
 
@@ -146,9 +169,16 @@ function footing({ header, evidence, integrity }: Result): string {
   const instruments = header.instruments.map(
     ({ role, identity, address, driver }) => `${role}: ${identity}, ${driver}, ${address}`,
   );
-  const journal =
-    integrity.kind === 'whole'
-      ? 'journal whole, every seal holds'
-      : `journal ${integrity.kind}, ${integrity.lines} lines believed`;
-  return [...instruments, `${evidence.readings} readings; ${journal}`].join('\n');
+  return [...instruments, `${evidence.readings} readings; ${journalInWords(integrity)}`].join('\n');
+}
+
+function journalInWords(integrity: Result['integrity']): string {
+  switch (integrity.kind) {
+    case 'whole':
+      return 'journal whole, every seal holds';
+    case 'cut-off':
+      return `journal cut off after ${integrity.lines} whole lines`;
+    case 'damaged':
+      return `journal damaged, ${integrity.lines} lines believed`;
+  }
 }
