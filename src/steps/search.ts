@@ -29,6 +29,8 @@ export interface Bracket {
 /** A module whose limit keeps moving would be probed for ever. */
 const mostProbes = 80;
 const watchInterval = 0.05;
+/** Fewer do not tell how a module limits. */
+const fewestLooks = 3;
 
 /**
  * The search for the current at which a module drops out.
@@ -113,22 +115,32 @@ export class Search {
     await this.#return();
   }
 
-  /** The overload goes on for a while: a module's limit shows in how it fails. */
+  /**
+   * The overload goes on for a while: a module's limit shows in how it fails. It ends by the clock and not by
+   * the number of readings, as a slow meter must not make a long overload of a short one.
+   */
   async #watch(current: Amperes): Promise<void> {
     this.#watched = true;
-    const { watch } = this.#parameters;
-    if (watch === 0) return;
-    const end = this.#context.clock.now() + watch;
-    await this.#points.take({
+    const { clock, signal } = this.#context;
+    if (this.#parameters.watch === 0) return;
+    const end = clock.now() + this.#parameters.watch;
+    let before = clock.now();
+    let count = 0;
+    const { samples } = await this.#points.take({
       phase: 'overload',
       set: { current },
       dwell: 0,
-      // By time and not by number, as a slow meter must not make a long overload of a short one.
       readings: Number.POSITIVE_INFINITY,
       every: watchInterval,
       judge: () => 'measured',
-      until: ({ t }) => t >= end,
+      until: ({ t }) => {
+        const next = t + (t - before);
+        before = t;
+        count += 1;
+        return count >= fewestLooks && next > end;
+      },
     });
+    await clock.sleep(Math.max(0, end - (samples.at(-1)?.t ?? end)), signal);
   }
 
   /** Load off, module back, and the known good current proved; where it no longer holds, a lower one. */
