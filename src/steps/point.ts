@@ -18,7 +18,7 @@ export interface PointPlan {
   /** Wait between the set-point and the first reading. */
   readonly dwell: Seconds;
   readonly readings: number;
-  /** Wait between two readings; 0 when left out. */
+  /** Wait between two readings; short and uneven when left out. */
   readonly every?: Seconds;
   /** What each sample says of the module. */
   readonly judge: (seen: Seen) => PointOutcome;
@@ -29,6 +29,18 @@ export interface PointPlan {
 export interface PointSeen {
   readonly outcome: PointOutcome;
   readonly samples: readonly Seen[];
+}
+
+const longestStagger: Seconds = 0.02;
+const goldenShare = (Math.sqrt(5) - 1) / 2;
+
+/**
+ * An uneven wait before a reading. Taken at even distances, the readings of an output that swings in the same
+ * time are all alike, and a module that oscillates looks steady. Multiples of the golden section spread the
+ * waits as evenly as can be, and are the same in every run.
+ */
+function stagger(sample: number): Seconds {
+  return ((sample * goldenShare) % 1) * longestStagger;
 }
 
 /** The points of one step, numbered as they are taken. */
@@ -57,7 +69,7 @@ export class Points {
     const samples: Seen[] = [];
     let outcome: PointOutcome = 'measured';
     for (let sample = 1; sample <= plan.readings; sample += 1) {
-      if (sample > 1 && plan.every !== undefined) await clock.sleep(plan.every, signal);
+      if (sample > 1) await clock.sleep(plan.every ?? stagger(sample), signal);
       const seen = await this.#sample(point, sample, plan.set.current);
       samples.push(seen);
       outcome = plan.judge(seen);
