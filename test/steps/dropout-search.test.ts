@@ -60,12 +60,23 @@ describe('the search for the dropout', () => {
       const overloads = bench.the('point-began').filter(({ phase }) => phase === 'overload');
       expect(overloads).toHaveLength(1);
       const [began] = overloads;
-      const ended = bench.the('point-ended').find(({ point }) => point === began?.point);
-      const lasted = (ended?.t ?? 0) - (began?.t ?? 0);
+      const unloaded = bench.the('input').find(({ state, t }) => state === 'off' && t > (began?.t ?? 0));
+      const lasted = (unloaded?.t ?? 0) - (began?.t ?? 0);
       expect(lasted).toBeGreaterThanOrEqual(2);
-      // A slow meter makes it longer by one sample at the most.
-      expect(lasted).toBeLessThan(2.2 + readingTime);
+      expect(lasted).toBeLessThan(2.05);
     }
+  });
+
+  it('looks at an overload three times at least, as fewer tell nothing, and then ends it', async () => {
+    const { meter, load } = exactInstruments;
+    const instruments = {
+      load: load ?? { errors: {} },
+      meter: { errors: meter?.errors ?? {}, readingTime: 1 },
+    };
+    const bench = await stage({ ...plain, simulation: { instruments } });
+    await bench.perform('dropout-search', { ...toTwice, watch: '2 s' });
+    const began = bench.the('point-began').find(({ phase }) => phase === 'overload');
+    expect(bench.the('reading').filter(({ point }) => point === began?.point)).toHaveLength(9);
   });
 
   it('does not watch an overload when told not to', async () => {
