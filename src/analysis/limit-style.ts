@@ -12,7 +12,7 @@ import { type Finding, inWords } from './finding.js';
  * - hiccup: the samples change between a current of the limit's size and next to none; or there was no
  *   current at any time and the module came back by itself.
  * - constant-power: the set current went on flowing, and the voltage fell in proportion: V·I as at the
- *   dropout. Not where the droop alone explains most of the fall: then no limit was met yet.
+ *   dropout. Not where the droop alone explains the fall: then no limit was met yet.
  * - constant-current: the current stayed within a tenth of the dropout current, the voltage collapsed.
  * - foldback: a steady current clearly below the dropout current, the voltage collapsed.
  *
@@ -60,6 +60,8 @@ const fewestSamples = 3;
 const collapsed = 0.5;
 const nothing = 0.05;
 const limitSized = 0.4;
+/** The part of the fall beyond which the droop is all of it; a limit just met takes the rest. */
+const droopAlone = 0.8;
 
 function overloadOf({ set, samples }: PointEvidence): Overload {
   return {
@@ -118,7 +120,7 @@ function withoutCollapse({ set, samples }: Overload, module: Module, current: Am
   if (!flows || share >= 1.05 || share <= 0.85) {
     return { style: 'undetermined', because: 'the voltage sagged and did not collapse' };
   }
-  if (droop * current > (openCircuit - voltage) / 2) {
+  if (droop * current > droopAlone * (openCircuit - voltage)) {
     return { style: 'undetermined', because: 'the voltage sags by droop alone: no limit was met yet' };
   }
   return { style: 'constant-power', because: 'under overload the power stays what it was at the limit' };

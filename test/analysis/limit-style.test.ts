@@ -52,6 +52,12 @@ describe('how a module limits', () => {
     ]);
   });
 
+  it('is constant-power where droop and limit share the fall', () => {
+    // 15 V less 5.4 A × 65 mΩ is 14.65 V; the limit takes another 0.25 V.
+    const drooping = { ...module, droop: 0.065 };
+    expect(styleOf(steadily(14.4, 5.4), [backSoon], drooping)[0]?.[0]).toBe('constant-power');
+  });
+
   it('is undetermined for nothing at all where the record ends before the recovery', () => {
     expect(styleOf(nothing, [])[0]?.[0]).toBe('undetermined');
   });
