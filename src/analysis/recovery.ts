@@ -1,11 +1,13 @@
-import { rectangular } from '../statistics/uncertainty-budget.js';
+import { type Contribution, rectangular } from '../statistics/uncertainty-budget.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
 import { promised } from './promised-errors.js';
 
 /**
  * `recovery-time`: the slowest of the recoveries after an overload, from the load's going off to the
- * voltage's being back; between the last look without it and the first with it.
+ * voltage's being back; between the last look without it and the first with it. How long the next one
+ * takes differs by the spread of those seen: a module that tries again each period may have been unloaded
+ * just before it tries, or just after.
  */
 export function recoveryFindings(evidence: Evidence): readonly Finding[] {
   const recoveries = evidence.steps.flatMap((step) =>
@@ -23,10 +25,20 @@ export function recoveryFindings(evidence: Evidence): readonly Finding[] {
       'recovery-time',
       'time',
       (slowest.after + slowest.within) / 2,
-      [promised('between two looks', rectangular(Math.abs(slowest.within - slowest.after) / 2))],
+      [
+        promised('between two looks', rectangular(Math.abs(slowest.within - slowest.after) / 2)),
+        ...spreadOf(recoveries.map(({ after, within }) => (after + within) / 2)),
+      ],
       { step: slowest.step, note: noteOf(slowest, recoveries.length) },
     ),
   ];
+}
+
+/** Evenly anywhere between the quickest and the slowest: too few are seen for the scatter to be an estimate. */
+function spreadOf(times: readonly number[]): readonly Contribution[] {
+  if (times.length < 2) return [];
+  const range = Math.max(...times) - Math.min(...times);
+  return [promised('from one recovery to the next', rectangular(range / 2))];
 }
 
 function noteOf({ after }: { readonly after: number }, count: number): string {

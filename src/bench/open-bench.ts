@@ -26,8 +26,8 @@ export interface OpenBench {
   readonly load: Load;
   readonly meter: Instrument | undefined;
   readonly instruments: readonly Instrument[];
-  /** Reads everything there is to read at one moment. */
-  sample(): Promise<readonly Taken[]>;
+  /** Reads everything there is to read at one moment; `each` is told of every value as it comes. */
+  sample(each: (taken: Taken) => void): Promise<readonly Taken[]>;
   /** Closes the load's connection and, after a pause, opens it again; hands over a load that answers. */
   reopenLoad(pause: Seconds): Promise<Load>;
   /** Does something that no listener can stop: a journal on a full disk must not keep the load on. */
@@ -74,11 +74,15 @@ function assemble(
     get instruments() {
       return instruments();
     },
-    async sample() {
+    async sample(each) {
       const taken: Taken[] = [];
-      if (meter) taken.push({ of: 'meter', what: 'voltage', measurement: await meter.read('voltage') });
-      taken.push({ of: 'load', what: 'voltage', measurement: await load.readVoltage() });
-      taken.push({ of: 'load', what: 'current', measurement: await load.readCurrent() });
+      const take = (one: Taken): void => {
+        each(one);
+        taken.push(one);
+      };
+      if (meter) take({ of: 'meter', what: 'voltage', measurement: await meter.read('voltage') });
+      take({ of: 'load', what: 'voltage', measurement: await load.readVoltage() });
+      take({ of: 'load', what: 'current', measurement: await load.readCurrent() });
       return taken;
     },
     async reopenLoad(pause) {

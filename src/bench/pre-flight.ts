@@ -19,11 +19,12 @@ const tolerance = 0.25;
 const nothing = 0.05;
 
 /**
- * Reads the open-circuit voltage with the input off.
+ * Reads the open-circuit voltage with the input off, and hands it over when it is one that this module may
+ * have.
  * @throws PreFlightError when it has the wrong sign or a size that this module can't have.
  */
-export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): Promise<void> {
-  const taken = await bench.sample();
+export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): Promise<Volts> {
+  const taken = await bench.sample(() => undefined);
   const volts =
     bench.meter === undefined ? valueOf(taken, 'load', 'voltage') : valueOf(taken, 'meter', 'voltage');
   if (Number.isNaN(volts)) {
@@ -32,7 +33,7 @@ export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): P
       'check the range and the leads of the meter',
     );
   }
-  const read = formatQuantity(volts, 'voltage');
+  const read = formatQuantity(volts, 'voltage', { significant: 4 });
   if (volts < -rated * nothing) {
     throw new PreFlightError(
       `the module reads ${read}`,
@@ -51,4 +52,5 @@ export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): P
       'is this the right module file? Is the right module connected?',
     );
   }
+  return volts;
 }

@@ -1,4 +1,5 @@
 import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
+import { jsonText } from '../report/json-text.js';
 import { resultAsJson } from '../report/json.js';
 import { endedHow, type Result } from '../report/result.js';
 import { styleFor } from '../report/style.js';
@@ -30,7 +31,7 @@ export function analyseRecord(
   if (wanted.strict === true && result.integrity.kind !== 'whole') throw new NotWholeError(result);
   streams.stdout.write(
     wanted.json === true
-      ? `${JSON.stringify(resultAsJson(result), null, 2)}\n`
+      ? jsonText(resultAsJson(result))
       : resultAsText(result, styleFor(streams.stdout, streams.environment)),
   );
   const { how } = endedHow(result);

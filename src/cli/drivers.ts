@@ -6,6 +6,7 @@ import { parseAddress } from '../files/connection-address.js';
 import { readDriver } from '../files/read-driver.js';
 import { tryDriver, type TrialResult } from '../instrument/trial.js';
 import { visible } from '../instrument/visible.js';
+import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
 import type { Streams } from './streams.js';
 import { connectors, shipped } from './wiring.js';
@@ -46,7 +47,7 @@ async function list(json: boolean, streams: Streams): Promise<ExitCode> {
   );
   if (json) {
     const listed = found.map(({ name, role, summary }) => ({ name, role, summary }));
-    streams.stdout.write(`${JSON.stringify({ format: 'railproof/drivers 1', drivers: listed }, null, 2)}\n`);
+    streams.stdout.write(jsonText({ format: 'railproof/drivers 1', drivers: listed }));
   } else {
     const rows = found.map(({ name, role, summary }) => [name, role, summary]);
     streams.stdout.write(`${alignTable(rows, ['left', 'left', 'left']).join('\n')}\n`);
@@ -70,9 +71,7 @@ async function tryOut(name: string, address: string, json: boolean, streams: Str
   const understood = results.filter((result) => result.verdict === 'understood').length;
   const sent = results.filter((result) => result.verdict !== 'not-sent').length;
   if (json) {
-    streams.stdout.write(
-      `${JSON.stringify({ format: 'railproof/trial 1', driver: driver.name, results }, null, 2)}\n`,
-    );
+    streams.stdout.write(jsonText({ format: 'railproof/trial 1', driver: driver.name, results }));
   } else {
     streams.stdout.write(`${understood} of ${sent} messages understood\n`);
   }

@@ -7,13 +7,14 @@ import { journalFormat, type JournalEvent } from '../record/journal-event.js';
 import { writeReadingsCsv } from '../record/readings-csv.js';
 import { makeRunFolder, replaceFile, type RunFolder, writeHeader } from '../record/run-folder.js';
 import { headerFormat, type RunHeader } from '../record/run-header.js';
+import { jsonText } from '../report/json-text.js';
 import { resultAsJson } from '../report/json.js';
 import type { Result } from '../report/result.js';
 import { understand } from '../report/understand.js';
 import { type Ending, perform, type RunWatcher } from '../run/perform.js';
 import type { Operator } from '../steps/operator.js';
 import type { LoadedPlan } from './load-plan.js';
-import type { World } from './wiring.js';
+import { recordedPath, type World } from './wiring.js';
 
 export interface PlanPerformed {
   readonly folder: RunFolder;
@@ -83,7 +84,7 @@ function finish(folder: RunFolder): Result {
   const result = understand(folder.path);
   try {
     writeReadingsCsv(folder);
-    replaceFile(folder.findings, JSON.stringify(resultAsJson(result), null, 2) + '\n');
+    replaceFile(folder.findings, jsonText(resultAsJson(result)));
   } catch {
     // The journal is whole; `railproof analyse` shows the same, and says where it can't write.
   }
@@ -134,7 +135,7 @@ function headerOf({ plan, files }: LoadedPlan, bench: OpenBench, began: Date): R
 }
 
 function fileOf(kind: string, { path, sha256, text }: FileRead<unknown>): RunHeader['files'][number] {
-  return { kind, path, sha256, text };
+  return { kind, path: recordedPath(path), sha256, text };
 }
 
 function program(): RunHeader['program'] {

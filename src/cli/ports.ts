@@ -1,5 +1,6 @@
 import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { listPorts } from '../instrument/ports.js';
+import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
 import type { Streams } from './streams.js';
 
@@ -7,7 +8,7 @@ import type { Streams } from './streams.js';
 export async function ports({ json }: { readonly json?: boolean }, streams: Streams): Promise<ExitCode> {
   const found = await listPorts();
   if (json === true) {
-    streams.stdout.write(`${JSON.stringify({ format: 'railproof/ports 1', ports: found }, null, 2)}\n`);
+    streams.stdout.write(jsonText({ format: 'railproof/ports 1', ports: found }));
   } else if (found.length === 0) {
     streams.stdout.write('No serial ports here. Is the adapter plugged in?\n');
   } else {

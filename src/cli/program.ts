@@ -61,7 +61,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
   command(
     'analyse <run>',
     'findings and decisions again, from the record',
-    'railproof analyse runs/20261201T091500Z-K1-real-limit',
+    'railproof analyse fixtures/runs/20261130T091500Z-K1-real-limit',
   )
     .option('--strict', 'refuse a record that was cut off or damaged')
     .addOption(json())
@@ -82,10 +82,13 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
   command(
     'drivers',
     'the shipped instrument drivers; --try walks through one against an instrument, input kept off',
-    'railproof drivers --try load-input-scpi --connection tcp://127.0.0.1:5025',
+    'railproof drivers --try load-input-scpi --connection replay:fixtures/dialogues/load-input-scpi.jsonl',
   )
     .option('--try <driver>', 'a shipped driver by its name, or a file')
-    .option('--connection <address>', 'where the instrument is: tcp://host:port or serial:path?baud=9600')
+    .option(
+      '--connection <address>',
+      'where the instrument is: tcp://host:port, serial:path?baud=9600 or replay:file',
+    )
     .addOption(json())
     .action(async (options: { try?: string; connection?: string; json?: boolean }) => {
       const { drivers } = await import('./drivers.js');
@@ -121,7 +124,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
       done(await safe(options, streams));
     });
 
-  command('runs [folder]', 'the records here', 'railproof runs runs')
+  command('runs [folder]', 'the records here', 'railproof runs fixtures/runs')
     .addOption(json())
     .action(async (folder: string | undefined, options: { json?: boolean }) => {
       const { runs } = await import('./runs.js');

@@ -1,5 +1,6 @@
 import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
+import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
 import { resultAsJson } from '../report/json.js';
 import { styleFor } from '../report/style.js';
@@ -57,7 +58,7 @@ export async function run(wanted: RunWanted, streams: Streams): Promise<ExitCode
 function tell({ result, ending, safety, folder }: PlanPerformed, json: boolean, streams: Streams): ExitCode {
   streams.stdout.write(
     json
-      ? `${JSON.stringify(resultAsJson(result), null, 2)}\n`
+      ? jsonText(resultAsJson(result))
       : resultAsText(result, styleFor(streams.stdout, streams.environment)),
   );
   streams.stderr.write(`record: ${folder.path}\n`);

@@ -5,6 +5,7 @@ import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import { NoRecordError } from '../record/record-error.js';
 import { runFolderAt } from '../record/run-folder.js';
+import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
 import type { Streams } from './streams.js';
 
@@ -28,7 +29,7 @@ export function runs(
     listed.push({ run: name, ...entry });
   }
   if (wanted.json === true) {
-    streams.stdout.write(`${JSON.stringify({ format: 'railproof/runs 1', runs: listed }, null, 2)}\n`);
+    streams.stdout.write(jsonText({ format: 'railproof/runs 1', runs: listed }));
   } else if (rows.length === 0) {
     streams.stdout.write(`No records in ${wanted.folder}.\n`);
   } else {

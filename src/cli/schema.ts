@@ -2,6 +2,7 @@ import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-er
 import { fileKinds, type FileKind } from '../files/file-kind.js';
 import { jsonSchemaOf } from '../files/json-schema.js';
 import { didYouMean } from '../files/nearest.js';
+import { jsonText } from '../report/json-text.js';
 import type { Streams } from './streams.js';
 import { vocabulary } from './wiring.js';
 
@@ -20,7 +21,7 @@ export class UnknownKindError extends RailproofError {
 /** `railproof schema`: the JSON Schema of a kind of file. */
 export function schema(kind: string, streams: Streams): ExitCode {
   if (!isFileKind(kind)) throw new UnknownKindError(kind);
-  streams.stdout.write(`${JSON.stringify(jsonSchemaOf(kind, vocabulary), null, 2)}\n`);
+  streams.stdout.write(jsonText(jsonSchemaOf(kind, vocabulary)));
   return exitCodes.conforms;
 }
 

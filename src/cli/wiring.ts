@@ -1,5 +1,5 @@
 import { fileURLToPath } from 'node:url';
-import { dirname } from 'node:path';
+import { dirname, sep } from 'node:path';
 import { findingNames } from '../analysis/finding-names.js';
 import type { Clock } from '../clock/clock.js';
 import { realClock } from '../clock/real-clock.js';
@@ -21,6 +21,12 @@ export const shipped = {
   procedures: fileURLToPath(new URL('procedures/', packageFolder)),
   drivers: fileURLToPath(new URL('drivers/', packageFolder)),
 };
+
+/** As a record names a file: those that come with the program by their place in it, wherever that is. */
+export function recordedPath(path: string): string {
+  const root = fileURLToPath(packageFolder);
+  return path.startsWith(root) ? path.slice(root.length).split(sep).join('/') : path;
+}
 
 export const vocabulary = { stepKinds, findings: findingNames };
 

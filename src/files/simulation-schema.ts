@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { choice, count, line, name, quantity, quantityOrWord } from './building-blocks.js';
 import { camelKeys } from './camel-keys.js';
+import type { Dimension } from '../quantity/quantity.js';
 import { readingDimensions, errorDimension } from './reading-dimensions.js';
 import type { ModuleLimit, Simulation } from './simulation-section.js';
 
@@ -79,17 +80,26 @@ const simulatedModule = camelKeys(
   }),
 );
 
-const errors = Object.fromEntries(
-  Object.entries(readingDimensions).map(([reading, dimension]) => {
-    const unit = errorDimension(dimension);
-    const schema = z.strictObject({
-      gain: quantity('ratio', 'Relative error of the reading.').prefault('0 %'),
+const errors = Object.fromEntries([
+  ...Object.entries(readingDimensions).map(([reading, dimension]) => [
+    reading,
+    errorsIn(errorDimension(dimension)).describe(`The errors of its readings of ${reading}.`),
+  ]),
+  ...(['current', 'voltage'] as const).map((quantity) => [
+    `set-${quantity}`,
+    errorsIn(quantity).describe(`How far the ${quantity} that it sets is from the one it was told.`),
+  ]),
+]) as Record<string, ReturnType<typeof errorsIn>>;
+
+function errorsIn(unit: Dimension) {
+  return z
+    .strictObject({
+      gain: quantity('ratio', 'Relative error.').prefault('0 %'),
       offset: quantity(unit, 'Error at zero.').default(0),
       resolution: quantity(unit, 'The step of the last digit.', { least: 0 }).default(0),
-    });
-    return [reading, schema.exactOptional().describe(`The errors of its readings of ${reading}.`)];
-  }),
-);
+    })
+    .exactOptional();
+}
 
 const simulatedInstrument = camelKeys(
   z.strictObject({

@@ -40,6 +40,7 @@ function findingAsJson(finding: Finding): object {
     value: typeof finding.value === 'number' ? inUnit(finding.value) : finding.value,
     unit: dimension === null ? null : ucumCode(dimension),
     standardUncertainty: standardUncertainty === null ? null : inUnit(standardUncertainty),
+    bound: finding.bound ?? null,
     interval: interval === null ? null : interval.map(inUnit),
     coverage: interval === null ? null : 0.95,
     step: finding.step,

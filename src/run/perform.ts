@@ -4,6 +4,7 @@ import type { OpenBench } from '../bench/open-bench.js';
 import { checkInputIsOff, checkOpenCircuitVoltage } from '../bench/pre-flight.js';
 import type { Clock } from '../clock/clock.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
 import type { JournalEvent } from '../record/journal-event.js';
 import type { Operator } from '../steps/operator.js';
 import type { Progress } from '../steps/step-kind.js';
@@ -97,7 +98,9 @@ async function begin({ plan, bench, journal, operator, signal }: Performance): P
   }
   await bench.load.prepare();
   if (plan.steps.some((step) => step.kind.needs.liveModule)) {
-    await checkOpenCircuitVoltage(bench, plan.module.rated.voltage);
+    const volts = await checkOpenCircuitVoltage(bench, plan.module.rated.voltage);
+    const read = formatQuantity(volts, 'voltage', { significant: 4 });
+    journal.append({ event: 'notice', text: `before anything was switched on the module read ${read}` });
   }
 }
 

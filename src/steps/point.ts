@@ -82,20 +82,13 @@ export class Points {
   async #sample(point: number, sample: number, setCurrent: Amperes | undefined): Promise<Seen> {
     const { bench, journal, clock, signal, limits, step, show } = this.#context;
     signal.throwIfAborted();
-    const taken = await bench.sample();
-    for (const { of, what, measurement } of taken) {
-      journal.append({
-        event: 'reading',
-        step,
-        point,
-        sample,
-        of,
-        what,
-        ...(measurement.kind === 'value'
+    const taken = await bench.sample(({ of, what, measurement }) => {
+      const read =
+        measurement.kind === 'value'
           ? { value: measurement.value }
-          : { value: null, problem: measurement.kind }),
-      });
-    }
+          : { value: null, problem: measurement.kind };
+      journal.append({ event: 'reading', step, point, sample, of, what, ...read });
+    });
     guard(taken, limits);
     const seen = {
       t: clock.now(),

@@ -16,7 +16,8 @@ describe('the recovery time', () => {
       note: 'the slowest of 3',
     });
     expect(found?.value).toBeCloseTo(0.6, 12);
-    expect(found?.standardUncertainty).toBeCloseTo(0.1 / Math.sqrt(3), 12);
+    // Half a look, and half the way from the quickest (0.03 s) to the slowest (0.6 s).
+    expect(found?.standardUncertainty).toBeCloseTo(Math.hypot(0.1, 0.57 / 2) / Math.sqrt(3), 12);
   });
 
   it('says that the voltage was back before anyone looked', () => {

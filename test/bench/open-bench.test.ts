@@ -14,7 +14,9 @@ describe('a bench that is opened', () => {
 
   it('reads all there is to read at one moment, the current last', async () => {
     const bench = await (await nursery()).open();
-    const taken = await bench.sample();
+    const heard: unknown[] = [];
+    const taken = await bench.sample((one) => heard.push(one));
+    expect(heard).toEqual(taken);
     expect(taken.map(({ of, what }) => `${of} ${what}`)).toEqual([
       'meter voltage',
       'load voltage',

@@ -74,6 +74,7 @@ describe('the result as JSON', () => {
         'value',
         'unit',
         'standardUncertainty',
+        'bound',
         'interval',
         'coverage',
         'step',
