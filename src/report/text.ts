@@ -1,8 +1,8 @@
-import type { Finding } from '../analysis/finding.js';
 import type { Decision } from '../judgement/judge.js';
-import { formatQuantity, formatUncertain, type UncertainText } from '../quantity/format-quantity.js';
-import type { Amperes } from '../quantity/quantity.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
 import { alignTable } from './align.js';
+import { answer } from './answer.js';
+import { columnsOf } from './finding-text.js';
 import { printableData } from './printable.js';
 import { endedHow, type Result } from './result.js';
 import type { Style } from './style.js';
@@ -13,7 +13,7 @@ export function resultAsText(recorded: Result, style: Style): string {
   return [
     heading(result, style),
     ...warnings(result, style),
-    answer(result, style),
+    answerAsText(result, style),
     findingsTable(result, style),
     derivation(result, style),
     decisionsTable(result, style),
@@ -64,32 +64,15 @@ function warnings(result: Result, style: Style): string[] {
   return lines.map((line) => style.warn(line));
 }
 
-function answer(result: Result, style: Style): string {
-  const { findings } = result;
-  const recommended = findings.find((finding) => finding.name === 'recommended-current');
-  const usable = findings.find((finding) => finding.name === 'usable-current');
-  if (recommended === undefined || usable === undefined) return '';
-  const current = Number(recommended.value);
-  const advice = current > 0 ? `load it continuously with up to ${roundedDown(current)}` : 'do not load it';
-  const sentence = endedHow(result).how === 'completed' ? advice : `as far as the run went, ${advice}`;
-  return [
-    style.strong(`${sentence.charAt(0).toUpperCase()}${sentence.slice(1)}.`),
-    `It delivers ${inOneLine(usable)}; ${usable.note}.`,
-  ].join('\n');
-}
-
-/** To three digits, and never up: a recommendation must not grow by being written. */
-function roundedDown(current: Amperes): string {
-  const step = 10 ** (Math.floor(Math.log10(current)) - 2);
-  // A whole number of steps is not made one less by what dividing loses.
-  const down = Math.floor(current / step + 1e-9) * step;
-  return formatQuantity(down, 'current', { significant: 3 });
+function answerAsText(result: Result, style: Style): string {
+  const [first, ...others] = answer(result);
+  return first === undefined ? '' : [style.strong(first), ...others].join('\n');
 }
 
 function findingsTable({ findings }: Result, style: Style): string {
   if (findings.length === 0) return 'No findings: the record holds too little.';
   const rows = findings.map((finding) => {
-    const { value, uncertainty, unit } = columns(finding);
+    const { value, uncertainty, unit } = columnsOf(finding);
     const plusMinus = uncertainty === '' ? '' : '±';
     return [
       finding.name,
@@ -106,19 +89,6 @@ function findingsTable({ findings }: Result, style: Style): string {
     style.strong('Findings') + '   value ± expanded uncertainty, 95 %',
     ...table.map((row) => `  ${row}`),
   ].join('\n');
-}
-
-function columns(finding: Finding): UncertainText {
-  if (finding.dimension === null || typeof finding.value === 'string') {
-    return { value: String(finding.value), uncertainty: '', unit: '' };
-  }
-  const expanded = finding.interval === null ? undefined : (finding.interval[1] - finding.interval[0]) / 2;
-  return formatUncertain(finding.value, expanded, finding.dimension);
-}
-
-function inOneLine(finding: Finding): string {
-  const { value, uncertainty, unit } = columns(finding);
-  return uncertainty === '' ? `${value} ${unit}` : `${value} ± ${uncertainty} ${unit}`;
 }
 
 function derivation({ findings }: Result, style: Style): string {

@@ -3,10 +3,14 @@ import type { Readable, Writable } from 'node:stream';
 import type { Acknowledgement } from '../record/journal-event.js';
 import type { Operator, OperatorRequest } from '../steps/operator.js';
 import { StoppedByOperator } from './stopped.js';
+import { wordWrap } from './word-wrap.js';
+
+/** Longer lines are hard to read, however wide the window. */
+const widestText = 100;
 
 interface Terminal {
   readonly input: Readable & { readonly isTTY?: boolean };
-  readonly output: Writable;
+  readonly output: Writable & { readonly columns?: number };
   /** Cautions are acknowledged beforehand. */
   readonly yes: boolean;
 }
@@ -44,7 +48,13 @@ export class TerminalOperator implements Operator {
   }
 
   #say(text: string): void {
-    this.#terminal.output.write(text);
+    this.#terminal.output.write(this.#fitted(text));
+  }
+
+  /** Broken between words where there is a terminal; whoever reads a pipe has lines of their own. */
+  #fitted(text: string): string {
+    const { columns } = this.#terminal.output;
+    return columns === undefined ? text : wordWrap(text, Math.min(columns, widestText));
   }
 
   /** At the end of the input a question would never be answered, so that is taken as a wish to stop. */
@@ -64,7 +74,7 @@ export class TerminalOperator implements Operator {
       closed.abort(new StoppedByOperator('stopped with Ctrl-C at a question'));
     });
     try {
-      return await lines.question(text, { signal: AbortSignal.any([signal, closed.signal]) });
+      return await lines.question(this.#fitted(text), { signal: AbortSignal.any([signal, closed.signal]) });
     } catch (error) {
       if (signal.aborted) throw signal.reason;
       if (closed.signal.aborted) throw closed.signal.reason;

@@ -1,0 +1,51 @@
+import type { Finding } from '../analysis/finding.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Amperes } from '../quantity/quantity.js';
+import { inOneLine } from './finding-text.js';
+import { endedHow, type Result } from './result.js';
+
+/** What the technician came for, in a few sentences, the first of which is what to do. Empty when nothing was found. */
+export function answer(result: Result): readonly string[] {
+  const { recommended, usable } = named(result.findings);
+  if (recommended === undefined || usable === undefined) return [];
+  const current = Number(recommended.value);
+  const advice = current > 0 ? `load it continuously with up to ${roundedDown(current)}` : 'do not load it';
+  const sentence = endedHow(result).how === 'completed' ? advice : `as far as the run went, ${advice}`;
+  return [
+    `${sentence.charAt(0).toUpperCase()}${sentence.slice(1)}.`,
+    `It delivers ${inOneLine(usable)}; ${usable.note}.`,
+    ...limit(result.findings),
+  ];
+}
+
+/** Where it leaves regulation, where it drops out, and what it does there. */
+function limit(findings: readonly Finding[]): readonly string[] {
+  const { onset, dropout, style } = named(findings);
+  if (dropout === undefined) return [];
+  const end = `drops out at ${inOneLine(dropout)}`;
+  const way = style === undefined || style.value === 'undetermined' ? '' : ` (${String(style.value)})`;
+  return onset === undefined
+    ? [`It regulates until it ${end}${way}.`]
+    : [`It leaves regulation at ${inOneLine(onset)} and ${end}${way}.`];
+}
+
+function named(
+  findings: readonly Finding[],
+): Readonly<Record<'recommended' | 'usable' | 'onset' | 'dropout' | 'style', Finding | undefined>> {
+  const find = (name: string): Finding | undefined => findings.find((finding) => finding.name === name);
+  return {
+    recommended: find('recommended-current'),
+    usable: find('usable-current'),
+    onset: find('limit-onset-current'),
+    dropout: find('dropout-current'),
+    style: find('limit-style'),
+  };
+}
+
+/** To three digits, and never up: a recommendation must not grow by being written. */
+function roundedDown(current: Amperes): string {
+  const step = 10 ** (Math.floor(Math.log10(current)) - 2);
+  // A whole number of steps is not made one less by what dividing loses.
+  const down = Math.floor(current / step + 1e-9) * step;
+  return formatQuantity(down, 'current', { significant: 3 });
+}

@@ -1,0 +1,25 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { wordWrap } from '../../src/run/word-wrap.js';
+
+describe('text for a terminal', () => {
+  it('breaks between words, and keeps the lines it had', () => {
+    expect(wordWrap('Keep them clear of anything that burns.\nThen wait.', 20)).toBe(
+      'Keep them clear of\nanything that burns.\nThen wait.',
+    );
+  });
+
+  it('leaves a word that is too long in one piece', () => {
+    expect(wordWrap('see https://example.org/a/long/path now', 10)).toBe(
+      'see\nhttps://example.org/a/long/path\nnow',
+    );
+  });
+
+  it('loses and adds nothing but line ends', () => {
+    fc.assert(
+      fc.property(fc.lorem({ maxCount: 40 }), fc.integer({ min: 5, max: 80 }), (text, width) => {
+        expect(wordWrap(text, width).replaceAll('\n', ' ')).toBe(text);
+      }),
+    );
+  });
+});
