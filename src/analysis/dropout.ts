@@ -55,7 +55,7 @@ function bracketOf(step: StepEvidence, inRecord: readonly CurvePoint[]): readonl
     .at(-1);
   if (highest === undefined) return [];
   const flowing = readBackLine(held);
-  const most = Math.max(...inStep.map((point) => point.set));
+  const most = inStep.reduce((highest, point) => Math.max(highest, point.set), 0);
   return [
     {
       step: step.step,

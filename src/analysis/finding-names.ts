@@ -27,12 +27,14 @@ export const findingNames = {
   'stack-voltage': 'voltage',
   'weakest-module': 'word',
   'float-voltage-of-*': 'voltage',
+  /** Whatever the operator was asked for; one that is a quantity carries its own unit. */
+  'answer-of-*': 'word',
 } as const satisfies Record<string, Dimension | 'word'>;
 
-/** What a finding of that name measures; undefined for a name that is none of ours, as of an operator's answer. */
+/** What a finding of that name measures; undefined for a name that is none of ours. */
 export function dimensionOfFinding(name: string): Dimension | 'word' | undefined {
   const names: Readonly<Record<string, Dimension | 'word'>> = findingNames;
   if (Object.hasOwn(names, name)) return names[name];
-  const family = Object.keys(names).find((one) => one.endsWith('*') && name.startsWith(one.slice(0, -1)));
+  const family = Object.keys(names).find((one) => one.endsWith('*') && name.length >= one.length && name.startsWith(one.slice(0, -1)));
   return family === undefined ? undefined : names[family];
 }

@@ -47,7 +47,8 @@ export function leadFindings(evidence: Evidence): readonly Finding[] {
     { step: step.step },
   );
   const low = finding.interval?.[0] ?? Number.NEGATIVE_INFINITY;
-  const worse = low > resistance + uncertainty;
+  const given = resistance > 0 || uncertainty > 0;
+  const worse = given && low > resistance + uncertainty;
   return [
     worse ? { ...finding, note: 'more than the bench file says: look for a loose or burnt joint' } : finding,
   ];

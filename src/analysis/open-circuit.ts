@@ -60,7 +60,7 @@ const strictLevel = 1e-3;
 function driftNote(points: readonly PointEvidence[], resolution: Volts): string {
   if (points.length < 4) return '';
   const times = points.map((point) => point.t);
-  const duration = Math.max(...times) - Math.min(...times);
+  const duration = (times.at(-1) ?? 0) - (times[0] ?? 0);
   const fit = soundLine(
     times,
     points.map((point) => point.moduleVoltage.mean),

@@ -35,7 +35,7 @@ export function recommendedFindings(evidence: Evidence, usable: Usable | undefin
     {
       name: 'ambient',
       factor: 1,
-      reason: 'no ambient line was given; it holds for the surroundings of the test',
+      reason: 'no derating over temperature was given; it holds for the surroundings of the test',
     },
   ];
   if (derated > rated.current) {

@@ -1,11 +1,8 @@
 import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
-import { jsonText } from '../report/json-text.js';
-import { resultAsJson } from '../report/json.js';
-import { endedHow, type Result } from '../report/result.js';
-import { styleFor } from '../report/style.js';
-import { resultAsText } from '../report/text.js';
+import type { Result } from '../report/result.js';
 import { understand } from '../report/understand.js';
 import { statusOfOutcome } from './exit-status.js';
+import { shown } from './shown.js';
 import type { Streams } from './streams.js';
 
 /** A record that is not whole was to be refused. */
@@ -22,18 +19,18 @@ export class NotWholeError extends RailproofError {
   }
 }
 
-/** `railproof analyse`: what a record shows, worked out again. */
+/** `railproof analyse`: what a record shows, worked out again; it ends with the status that the run ended with. */
 export function analyseRecord(
   wanted: { readonly run: string; readonly strict?: boolean; readonly json?: boolean },
   streams: Streams,
 ): ExitCode {
   const result = understand(wanted.run);
   if (wanted.strict === true && result.integrity.kind !== 'whole') throw new NotWholeError(result);
-  streams.stdout.write(
-    wanted.json === true
-      ? jsonText(resultAsJson(result))
-      : resultAsText(result, styleFor(streams.stdout, streams.environment)),
-  );
-  const { how } = endedHow(result);
-  return how === 'stopped' ? exitCodes.stopped : statusOfOutcome(result.outcome);
+  streams.stdout.write(shown(result, wanted.json === true, streams));
+  const status = result.evidence.ended?.status ?? exitCodes.conforms;
+  return isExitCode(status) && status !== exitCodes.conforms ? status : statusOfOutcome(result.outcome);
+}
+
+function isExitCode(status: number): status is ExitCode {
+  return (Object.values(exitCodes) as number[]).includes(status);
 }

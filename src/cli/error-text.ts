@@ -1,4 +1,5 @@
 import { RailproofError } from '../errors/railproof-error.js';
+import { printable } from '../report/printable.js';
 
 /**
  * An error as it is shown: what happened, then what to do next. One line, unless there are several
@@ -7,11 +8,11 @@ import { RailproofError } from '../errors/railproof-error.js';
 export function errorText(error: unknown): string {
   if (!(error instanceof RailproofError)) {
     const text = error instanceof Error ? (error.stack ?? error.message) : String(error);
-    return `railproof: a fault of ours, please report it: ${printable(text)}`;
+    return `railproof: a fault of ours, please report it: ${printableLines(text)}`;
   }
-  const message = printable(error.message);
+  const message = printableLines(error.message);
   if (error.advice === undefined) return message;
-  const advice = printable(sentence(error.advice));
+  const advice = printableLines(sentence(error.advice));
   if (message.includes('\n')) return `${message}\n${advice}`;
   return /[.!?]$/.test(message) ? `${message} ${advice}` : `${message}. ${advice}`;
 }
@@ -21,9 +22,6 @@ function sentence(text: string): string {
   return /[.!?]$/.test(capital) ? capital : `${capital}.`;
 }
 
-function printable(text: string): string {
-  // eslint-disable-next-line no-control-regex -- they are what is looked for
-  return text.replace(/[\u0000-\u0009\u000b-\u001f\u007f-\u009f]/g, (character) => {
-    return `\\x${character.charCodeAt(0).toString(16).padStart(2, '0')}`;
-  });
+function printableLines(text: string): string {
+  return text.split('\n').map(printable).join('\n');
 }

@@ -1,4 +1,4 @@
-import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
+import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import type { Outcome } from '../judgement/judge.js';
 
 /** The exit status that a decision stands for. */
@@ -12,9 +12,4 @@ export function statusOfOutcome(outcome: Outcome | 'not-judged'): ExitCode {
     case 'undecided':
       return exitCodes.undecided;
   }
-}
-
-/** The exit status that an error stands for; what we did not foresee is our own fault. */
-export function statusOfError(error: unknown): ExitCode {
-  return error instanceof RailproofError ? error.exitCode : exitCodes.bug;
 }

@@ -1,8 +1,8 @@
-import { readFileSync } from 'node:fs';
 import { Command, CommanderError, Option } from 'commander';
-import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { errorText } from './error-text.js';
-import { statusOfError } from './exit-status.js';
+import { packageFacts } from './package-facts.js';
+import type { RunWanted } from './run.js';
 import type { Streams } from './streams.js';
 
 /**
@@ -20,7 +20,7 @@ export async function main(argv: readonly string[], streams: Streams): Promise<E
   } catch (error) {
     if (error instanceof CommanderError) return error.exitCode === 0 ? exitCodes.conforms : exitCodes.usage;
     streams.stderr.write(`${errorText(error)}\n`);
-    return statusOfError(error);
+    return exitCodeOf(error);
   }
 }
 
@@ -29,7 +29,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     .description(
       'Measures what a power-supply module really delivers, on an electronic load and a meter, and says how hard it may be worked.',
     )
-    .version(version())
+    .version(packageFacts().version)
     .exitOverride()
     .configureOutput({
       writeOut: (text) => streams.stdout.write(text),
@@ -53,7 +53,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     .option('--yes', 'acknowledge the cautions beforehand (for unattended benches)')
     .option('--dry-run', 'show what would be done, and touch nothing')
     .addOption(json())
-    .action(async (procedure: string, options: RunOptions) => {
+    .action(async (procedure: string, options: Omit<RunWanted, 'procedure'>) => {
       const { run } = await import('./run.js');
       done(await run({ procedure, ...options }, streams));
     });
@@ -143,22 +143,8 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
   return program;
 }
 
-interface RunOptions {
-  readonly bench: string;
-  readonly module: readonly string[];
-  readonly runs: string;
-  readonly yes?: boolean;
-  readonly dryRun?: boolean;
-  readonly json?: boolean;
-}
-
 const exitStatusHelp = `
 Exit status: 0 conforms, or nothing to judge; 1 does not conform; 2 undecided; 3 stopped by a guard or by
 the operator; 64 usage; 65 bad file; 66 missing file; 69 instrument unreachable or lost; 70 a fault of ours;
 74 a file could not be written.
 `;
-
-function version(): string {
-  const text = readFileSync(new URL('../../package.json', import.meta.url), 'utf8');
-  return (JSON.parse(text) as { version: string }).version;
-}

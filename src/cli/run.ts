@@ -1,19 +1,16 @@
-import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
-import { resultAsJson } from '../report/json.js';
-import { styleFor } from '../report/style.js';
-import { resultAsText } from '../report/text.js';
 import type { Plan } from '../run/plan.js';
 import { OperatorAbsentError } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
 import type { Operator } from '../steps/operator.js';
 import { errorText } from './error-text.js';
-import { statusOfError, statusOfOutcome } from './exit-status.js';
+import { statusOfOutcome } from './exit-status.js';
 import { loadPlan } from './load-plan.js';
 import { performPlan, type PlanPerformed } from './perform-plan.js';
 import { ProgressLine } from './progress-line.js';
+import { shown } from './shown.js';
 import { simulatedOperator } from './simulated-operator.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
@@ -55,14 +52,13 @@ export async function run(wanted: RunWanted, streams: Streams): Promise<ExitCode
   }
 }
 
-function tell({ result, ending, safety, folder }: PlanPerformed, json: boolean, streams: Streams): ExitCode {
-  streams.stdout.write(
-    json
-      ? jsonText(resultAsJson(result))
-      : resultAsText(result, styleFor(streams.stdout, streams.environment)),
-  );
+/** The result first, where there is one; then, whatever happened, whether the load is off, as the last words. */
+function tell(performed: PlanPerformed, json: boolean, streams: Streams): ExitCode {
+  const { understood, ending, safety, folder, status } = performed;
+  if (understood.kind === 'result') streams.stdout.write(shown(understood.result, json, streams));
   streams.stderr.write(`record: ${folder.path}\n`);
   if (ending.how !== 'completed') streams.stderr.write(`${errorText(ending.error)}\n`);
+  if (understood.kind === 'error') streams.stderr.write(`${errorText(understood.error)}\n`);
   if (safety.kind === 'unconfirmed') {
     streams.stderr.write(
       `\nIt could not be confirmed that the load is off: ${safety.why}\n${safety.advice}\n`,
@@ -70,8 +66,10 @@ function tell({ result, ending, safety, folder }: PlanPerformed, json: boolean, 
   } else {
     streams.stderr.write('The load is off; it was read back.\n');
   }
-  if (ending.how !== 'completed') return statusOfError(ending.error);
-  return safety.kind === 'unconfirmed' ? exitCodes.instrument : statusOfOutcome(result.outcome);
+  if (status !== exitCodes.conforms) return status;
+  return understood.kind === 'result'
+    ? statusOfOutcome(understood.result.outcome)
+    : exitCodeOf(understood.error);
 }
 
 function operatorFor(world: World, yes: boolean, streams: Streams): Operator {

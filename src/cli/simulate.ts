@@ -22,12 +22,14 @@ export async function simulate(
     clock: realClock,
     lines: wanted.pty === true ? 'pty' : 'tcp',
   });
+  // Listened for before anyone is told that this serves, who might stop it at once.
+  const stop = stopAsked();
   try {
     streams.stdout.write(withAddresses(file.text, served.addresses));
     for (const [role, address] of Object.entries(served.addresses))
       streams.stderr.write(`${role}: ${address}\n`);
     streams.stderr.write('Serving until Ctrl-C.\n');
-    await stopAsked();
+    await stop;
   } finally {
     await served.close();
   }

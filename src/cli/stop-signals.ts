@@ -1,14 +1,15 @@
-import { StoppedByOperator } from '../run/stopped.js';
+import { StoppedByOperator, UnforeseenError } from '../run/stopped.js';
 import type { Streams } from './streams.js';
 
 const reasons = {
   SIGINT: 'stopped with Ctrl-C',
   SIGTERM: 'stopped by a request to end (SIGTERM)',
   SIGHUP: 'stopped because the terminal was closed (SIGHUP)',
+  SIGQUIT: 'stopped with Ctrl-\\',
 } as const;
 
 /**
- * Turns the wish to end the program into a run that ends safely: the step is left, the bench is made safe,
+ * Turns the wish to end the program, and anything that breaks outside a step, into a run that ends safely: the step is left, the bench is made safe,
  * the record is closed. Asking again changes nothing, as that is already the quickest safe way out.
  */
 export function stopOnSignals(streams: Streams): { readonly signal: AbortSignal; release(): void } {
@@ -24,10 +25,17 @@ export function stopOnSignals(streams: Streams): { readonly signal: AbortSignal;
     process.on(name, handler);
     return { name, handler };
   });
+  const unforeseen = (error: unknown): void => {
+    controller.abort(new UnforeseenError(error));
+  };
+  process.on('uncaughtException', unforeseen);
+  process.on('unhandledRejection', unforeseen);
   return {
     signal: controller.signal,
     release: () => {
       for (const { name, handler } of handlers) process.off(name, handler);
+      process.off('uncaughtException', unforeseen);
+      process.off('unhandledRejection', unforeseen);
     },
   };
 }

@@ -1,4 +1,8 @@
+import { performance } from 'node:perf_hooks';
 import type { Clock } from './clock.js';
+
+/** Milliseconds of the machine's time after which its own events get a turn: a Ctrl-C, above all. */
+const breathEvery = 50;
 
 /**
  * A clock that only moves when someone waits on it: a wait is over at once, and the time has passed.
@@ -7,6 +11,7 @@ import type { Clock } from './clock.js';
 export class VirtualClock implements Clock {
   #now = 0;
   readonly #began: Date;
+  #breathed = performance.now();
 
   constructor(began: Date) {
     this.#began = began;
@@ -20,9 +25,12 @@ export class VirtualClock implements Clock {
     return new Date(this.#began.getTime() + this.#now * 1000);
   }
 
-  sleep(seconds: number, signal?: AbortSignal): Promise<void> {
-    if (signal?.aborted) return Promise.reject(signal.reason as Error);
+  async sleep(seconds: number, signal?: AbortSignal): Promise<void> {
+    signal?.throwIfAborted();
     this.#now += Math.max(0, seconds);
-    return Promise.resolve();
+    if (performance.now() - this.#breathed < breathEvery) return;
+    await new Promise((resolve) => setImmediate(resolve));
+    this.#breathed = performance.now();
+    signal?.throwIfAborted();
   }
 }

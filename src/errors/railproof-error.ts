@@ -32,3 +32,8 @@ export abstract class RailproofError extends Error {
     this.advice = options.advice;
   }
 }
+
+/** The exit status that an error stands for; what we did not foresee is our own fault. */
+export function exitCodeOf(error: unknown): ExitCode {
+  return error instanceof RailproofError ? error.exitCode : exitCodes.bug;
+}

@@ -34,8 +34,6 @@ export const benchSchema: z.ZodType<Bench> = z
       .strictObject({
         load: place.describe('The electronic load.'),
         meter: place.describe('The meter, its probes at the module.').exactOptional(),
-        scanner: place.describe('The scanner that leads one meter to several places.').exactOptional(),
-        source: place.describe('The source that feeds modules which run from dc.').exactOptional(),
       })
       .describe('The instruments, by their part in the work.'),
     leads: z
@@ -51,7 +49,6 @@ export const benchSchema: z.ZodType<Bench> = z
         voltage: quantity('voltage', 'The highest voltage.', { above: 0 }),
         current: quantity('current', 'The highest current.', { above: 0 }),
         power: quantity('power', 'The highest power.', { above: 0 }),
-        temperature: quantity('temperature', 'The highest temperature, where one is read.').exactOptional(),
       })
       .describe('Never exceeded, whatever a procedure asks.'),
     simulation: simulationSchema.exactOptional(),

@@ -1,14 +1,11 @@
-import type { Amperes, Celsius, Ohms, Volts, Watts } from '../quantity/quantity.js';
-import type { Role } from './driver.js';
+import type { Amperes, Ohms, Volts, Watts } from '../quantity/quantity.js';
 import type { Simulation } from './simulation-section.js';
 
 /** A bench file: the instruments, leads and hard limits of one work place. */
 export interface Bench {
   readonly name: string;
-  readonly instruments: { readonly load: InstrumentPlace } & Partial<
-    Readonly<Record<Exclude<Role, 'load'>, InstrumentPlace>>
-  >;
-  /** There and back; used when nothing senses at the module. */
+  readonly instruments: { readonly load: InstrumentPlace; readonly meter?: InstrumentPlace };
+  /** There and back; used when nothing senses at the module. 0 ± 0 where the file gives none. */
   readonly leads: { readonly resistance: Ohms; readonly uncertainty: Ohms };
   readonly voltageFrom: 'meter-at-module' | 'load-terminals';
   /** Never exceeded, whatever a procedure asks. */
@@ -16,7 +13,6 @@ export interface Bench {
     readonly voltage: Volts;
     readonly current: Amperes;
     readonly power: Watts;
-    readonly temperature?: Celsius;
   };
   /** What is really there, on a bench with simulated instruments. */
   readonly simulation?: Simulation;

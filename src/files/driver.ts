@@ -62,9 +62,9 @@ export interface Accuracy {
 export const operationsOf = {
   load: {
     must: ['make-safe', 'input-on', 'input-off', 'current-mode', 'set-current'],
-    may: ['voltage-mode', 'set-voltage', 'protect-current', 'protect-voltage', 'protect-power'],
+    may: ['voltage-mode', 'set-voltage', 'protect-current', 'protect-voltage'],
   },
-  meter: { must: ['make-safe'], may: ['measure-voltage', 'measure-resistance', 'measure-temperature'] },
+  meter: { must: ['make-safe'], may: [] },
   scanner: { must: ['make-safe', 'close-channel', 'open-all'], may: [] },
   source: { must: ['make-safe', 'output-on', 'output-off'], may: ['set-voltage', 'set-current'] },
 } as const satisfies Record<Role, { must: readonly string[]; may: readonly string[] }>;

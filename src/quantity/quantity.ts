@@ -12,7 +12,7 @@ export const dimensions = {
   'temperature-difference': 'K',
   /** A plain ratio; 5 % is 0.05. In JSON it is written in %. */
   ratio: '%',
-  /** Relative change for each kelvin; -0.2 % is -0.002. */
+  /** A drift. */
   'voltage-rate': 'V/h',
 } as const;
 

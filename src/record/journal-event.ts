@@ -154,6 +154,8 @@ export interface Ended {
   readonly event: 'ended';
   readonly how: 'completed' | 'stopped' | 'failed';
   readonly reason: string | null;
+  /** The exit status that the reason stands for; 0 for a completed run, whatever it showed. */
+  readonly status: number;
 }
 
 /** These are sealed, and flushed to the disk before the run goes on. */

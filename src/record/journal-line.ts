@@ -95,7 +95,7 @@ const shapeOf: Shapes = {
   notice: { text: isText },
   'guard-tripped': { guard: isText, text: isText },
   'step-ended': { step: isCount },
-  ended: { how: isOneOf(['completed', 'stopped', 'failed']), reason: orNull(isText) },
+  ended: { how: isOneOf(['completed', 'stopped', 'failed']), reason: orNull(isText), status: isNumber },
 };
 
 const shapes: ReadonlyMap<string, readonly (readonly [string, Fits])[]> = new Map(

@@ -5,7 +5,9 @@ export function alignTable(
   rows: readonly (readonly string[])[],
   sides: readonly ('left' | 'right')[],
 ): string[] {
-  const widths = sides.map((_, column) => Math.max(0, ...rows.map((row) => widthOf(row[column] ?? ''))));
+  const widths = sides.map((_, column) =>
+    rows.reduce((widest, row) => Math.max(widest, widthOf(row[column] ?? '')), 0),
+  );
   const used = sides.map((_, column) => (widths[column] ?? 0) > 0);
   return rows.map((row) =>
     sides

@@ -1,7 +1,7 @@
 import { analyse } from '../analysis/analyse.js';
 import { EvidenceCollector } from '../analysis/evidence.js';
-import { judge, overall } from '../judgement/judge.js';
-import { checkJournal, readJournal } from '../record/journal-reader.js';
+import { type Decision, judge, overall } from '../judgement/judge.js';
+import { checkJournal, type Integrity, readJournal } from '../record/journal-reader.js';
 import { runFolderAt } from '../record/run-folder.js';
 import { readHeader } from '../record/run-header.js';
 import type { Result } from './result.js';
@@ -21,5 +21,19 @@ export function understand(path: string): Result {
   const evidence = collector.result();
   const findings = analyse(evidence);
   const decisions = judge(header, findings);
-  return { run: folder.name, header, evidence, integrity, findings, decisions, outcome: overall(decisions) };
+  return {
+    run: folder.name,
+    header,
+    evidence,
+    integrity,
+    findings,
+    decisions,
+    outcome: outcomeOf(integrity, decisions),
+  };
+}
+
+/** Nobody knows what the missing part of a record would have shown, so it can't say that a module conforms. */
+function outcomeOf(integrity: Integrity, decisions: readonly Decision[]): Result['outcome'] {
+  const outcome = overall(decisions);
+  return integrity.kind !== 'whole' && outcome === 'conforms' ? 'undecided' : outcome;
 }

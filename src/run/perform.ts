@@ -3,14 +3,14 @@ import { makeSafe, type Safety } from '../bench/make-safe.js';
 import type { OpenBench } from '../bench/open-bench.js';
 import { checkInputIsOff, checkOpenCircuitVoltage } from '../bench/pre-flight.js';
 import type { Clock } from '../clock/clock.js';
-import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { JournalEvent } from '../record/journal-event.js';
 import type { Operator } from '../steps/operator.js';
 import type { Progress } from '../steps/step-kind.js';
 import { cautionTexts } from './cautions.js';
 import type { Plan } from './plan.js';
-import { StoppedByOperator } from './stopped.js';
+import { StoppedByOperator, UnforeseenError } from './stopped.js';
 
 export interface Performance {
   readonly plan: Plan;
@@ -38,6 +38,8 @@ export type Ending =
 export interface Performed {
   readonly ending: Ending;
   readonly safety: Safety;
+  /** What the run alone says; the decisions come later. */
+  readonly status: ExitCode;
 }
 
 /**
@@ -59,12 +61,17 @@ export async function perform(performance: Performance): Promise<Performed> {
       event: 'ended',
       how: ending.how,
       reason: ending.how === 'completed' ? null : ending.reason,
+      status: statusOf(ending, safety),
     });
   } catch (error) {
     // A journal that can't be written is reason enough to fail, but not to hide what went wrong before.
-    if (ending.how === 'completed') return { ending: endingOf(error), safety };
+    if (ending.how === 'completed') return performed(endingOf(error), safety);
   }
-  return { ending, safety };
+  return performed(ending, safety);
+}
+
+function performed(ending: Ending, safety: Safety): Performed {
+  return { ending, safety, status: statusOf(ending, safety) };
 }
 
 async function attempt(performance: Performance): Promise<Ending> {
@@ -74,7 +81,7 @@ async function attempt(performance: Performance): Promise<Ending> {
     return { how: 'completed' };
   } catch (error) {
     if (error instanceof GuardTrippedError) noteTrip(performance, error);
-    return endingOf(error);
+    return endingOf(error, performance.signal);
   }
 }
 
@@ -138,8 +145,16 @@ async function goThrough({
   }
 }
 
-function endingOf(thrown: unknown): Ending {
+/** Whoever aborts the signal wants an end, whatever reason they give; only an error of ours is a failure. */
+function endingOf(thrown: unknown, signal?: AbortSignal): Ending {
   const error = thrown instanceof Error ? thrown : new Error(String(thrown));
-  const stopped = error instanceof RailproofError && error.exitCode === exitCodes.stopped;
+  const asked = signal?.aborted === true && signal.reason === thrown && !(thrown instanceof UnforeseenError);
+  const stopped = asked || exitCodeOf(error) === exitCodes.stopped;
   return { how: stopped ? 'stopped' : 'failed', reason: error.message, error };
+}
+
+function statusOf(ending: Ending, safety: Safety): ExitCode {
+  if (ending.how === 'stopped') return exitCodes.stopped;
+  if (ending.how === 'failed') return exitCodeOf(ending.error);
+  return safety.kind === 'confirmed' ? exitCodes.conforms : exitCodes.instrument;
 }

@@ -6,6 +6,21 @@ export class StoppedByOperator extends RailproofError {
   readonly exitCode = exitCodes.stopped;
 }
 
+/** Something broke that nobody foresaw, outside of any step; the run ends as safely as any other. */
+export class UnforeseenError extends RailproofError {
+  readonly code = 'UNFORESEEN';
+  readonly exitCode = exitCodes.bug;
+
+  constructor(cause: unknown) {
+    super(
+      `a fault of ours, please report it: ${cause instanceof Error ? (cause.stack ?? cause.message) : String(cause)}`,
+      {
+        cause,
+      },
+    );
+  }
+}
+
 /** The procedure asks for things only a person can do, and there is nobody. */
 export class OperatorAbsentError extends RailproofError {
   readonly code = 'OPERATOR_ABSENT';

@@ -18,7 +18,7 @@ describe('what the operator answered', () => {
     const findings = analyse(evidenceOf([{ kind: 'operator', more: [temperature] }]));
     expect(findings).toMatchObject([
       {
-        name: 'case-temperature',
+        name: 'answer-of-case-temperature',
         value: 48,
         dimension: 'temperature',
         note: 'as the operator read it',
@@ -29,7 +29,13 @@ describe('what the operator answered', () => {
 
   it('is a word where a word was asked for', () => {
     const findings = analyse(evidenceOf([{ kind: 'operator', more: [words] }]));
-    expect(findings).toMatchObject([{ name: 'fan', value: 'turns', dimension: null, step: 1 }]);
+    expect(findings).toMatchObject([{ name: 'answer-of-fan', value: 'turns', dimension: null, step: 1 }]);
+  });
+
+  it('never passes for a measurement, whatever it is called', () => {
+    const claim: JournalEvent = { ...temperature, name: 'usable-current', value: 9, dimension: 'current' };
+    const findings = analyse(evidenceOf([{ kind: 'operator', more: [claim] }]));
+    expect(findings.map(({ name }) => name)).toEqual(['answer-of-usable-current']);
   });
 
   it('is none where another step asked for an act', () => {

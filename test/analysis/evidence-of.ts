@@ -108,7 +108,7 @@ export function eventsOf(steps: readonly Step[], ended = true): readonly TimedEv
     more.forEach(add);
     add({ event: 'step-ended', step });
   });
-  if (ended) add({ event: 'ended', how: 'completed', reason: null });
+  if (ended) add({ event: 'ended', how: 'completed', reason: null, status: 0 });
   return events;
 }
 

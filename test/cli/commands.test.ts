@@ -100,7 +100,9 @@ describe('run', () => {
       '--json',
     );
     const { findings } = JSON.parse(stdout) as { findings: { name: string }[] };
-    expect(findings).toEqual([expect.objectContaining({ name: 'case-temperature', value: 41, unit: 'Cel' })]);
+    expect(findings).toEqual([
+      expect.objectContaining({ name: 'answer-of-case-temperature', value: 41, unit: 'Cel' }),
+    ]);
   });
 
   it('a procedure that needs a person does not begin without one', async () => {

@@ -18,7 +18,7 @@ describe('an error as it is shown', () => {
   });
 
   it('never lets an instrument steer the terminal', () => {
-    expect(errorText(new Example('it answered \u001b[2J\u0007'))).toBe('it answered \\x1b[2J\\x07');
+    expect(errorText(new Example('it answered \u001b[2J\u0007'))).toBe('it answered \\u001b[2J\\u0007');
   });
 
   it('calls what was not foreseen a fault of ours, with its trace', () => {

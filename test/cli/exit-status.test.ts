@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { statusOfError, statusOfOutcome } from '../../src/cli/exit-status.js';
+import { statusOfOutcome } from '../../src/cli/exit-status.js';
+import { exitCodeOf } from '../../src/errors/railproof-error.js';
 import { GuardTrippedError } from '../../src/bench/bench-error.js';
 import { RecordWriteError } from '../../src/record/record-error.js';
 
@@ -14,9 +15,9 @@ describe('the exit status', () => {
   });
 
   it('of an error is its own, and of what nobody foresaw 70', () => {
-    expect(statusOfError(new GuardTrippedError('over-voltage', 'too much', ''))).toBe(3);
-    expect(statusOfError(new RecordWriteError('journal.jsonl', new Error('no')))).toBe(74);
-    expect(statusOfError(new TypeError('ours'))).toBe(70);
-    expect(statusOfError('a string')).toBe(70);
+    expect(exitCodeOf(new GuardTrippedError('over-voltage', 'too much', ''))).toBe(3);
+    expect(exitCodeOf(new RecordWriteError('journal.jsonl', new Error('no')))).toBe(74);
+    expect(exitCodeOf(new TypeError('ours'))).toBe(70);
+    expect(exitCodeOf('a string')).toBe(70);
   });
 });

@@ -45,7 +45,11 @@ describe('help', () => {
 
   it('of simulate shows an example that works, until it is stopped', async () => {
     const child = start(await exampleOf('simulate'));
-    child.stderr?.once('data', () => setTimeout(() => child.kill('SIGINT'), 300));
+    let talk = '';
+    child.stderr?.on('data', (more: Buffer) => {
+      talk += more.toString();
+      if (talk.includes('Serving until')) child.kill('SIGINT');
+    });
     const { status, stdout } = await ended(child);
     expect(stdout).toMatch(/^railproof: bench 1\n/);
     expect(stdout).not.toContain('simulation:');

@@ -74,17 +74,15 @@ it('everything that may be written is read', () => {
     'faults: []',
     `instruments:
     load:
-      errors: { voltage: { gain: 0.05 %, offset: 2 mV, resolution: 1 mV }, temperature: { offset: 0.5 K } }
+      errors: { voltage: { gain: 0.05 %, offset: 2 mV, resolution: 1 mV }, temperature: { offset: 0.5 K }, set-current: { gain: 0.2 % } }
       reading-time: 40 ms
   answers: { temperature: 41 °C }
   faults:
     - { at: 30 s, what: meter-silent }`,
   )
     .replace('earth: bonded', 'earth: 2 kΩ')
-    .replace('120 W }', '120 W, temperature: 70 °C }')
     .replace('current: 5 A } }', 'current: 5 A, short-circuit: 1.2 A }, rated-current: 4 A }');
-  const { simulation, limits } = parseBench(text, 'bench.yaml');
-  expect(limits.temperature).toBe(70);
+  const { simulation } = parseBench(text, 'bench.yaml');
   expect(simulation?.modules[0]?.earth).toBe(2000);
   expect(simulation?.modules[1]).toMatchObject({ limit: { shortCircuit: 1.2 }, ratedCurrent: 4 });
   expect(simulation?.instruments).toEqual({
@@ -92,6 +90,7 @@ it('everything that may be written is read', () => {
       errors: {
         voltage: { gain: 0.0005, offset: 0.002, resolution: 0.001 },
         temperature: { gain: 0, offset: 0.5, resolution: 0 },
+        'set-current': { gain: 0.002, offset: 0, resolution: 0 },
       },
       readingTime: 0.04,
     },

@@ -88,8 +88,8 @@ describe('one mistake is one line, at its place', () => {
     ],
     [
       'set-voltage: ',
-      'measure-voltage: [X]\n  set-voltage: ',
-      "17:20: operations.measure-voltage: a load has no operation 'measure-voltage'; it has make-safe, input-on, input-off, current-mode, set-current, voltage-mode, set-voltage, protect-current, protect-voltage, protect-power",
+      'output-on: [X]\n  set-voltage: ',
+      "17:14: operations.output-on: a load has no operation 'output-on'; did you mean 'input-on'?",
     ],
     [
       'CURR {amps}',

@@ -29,7 +29,7 @@ describe('a journal that is written', () => {
         const written = writeJournal(path, [
           opened,
           ...events,
-          { event: 'ended', how: 'completed', reason: null },
+          { event: 'ended', how: 'completed', reason: null, status: 0 },
         ]);
         const { events: read, integrity } = readBack(path);
         // Through JSON, as -0 is written as 0 there.
@@ -105,7 +105,7 @@ describe.skipIf(!canLimit && process.env['CI'] === undefined)('a journal that ru
       failed = error;
     }
     const still = (): void => {
-      writer.append({ event: 'ended', how: 'failed', reason: 'no room' });
+      writer.append({ event: 'ended', how: 'failed', reason: 'no room', status: 69 });
     };
     expect(still).toThrow(RecordWriteError);
     limitFiles('unlimited');

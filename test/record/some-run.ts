@@ -59,7 +59,7 @@ export const shortRun: readonly JournalEvent[] = [
   { event: 'notice', text: 'a "quoted" notice, with a comma and a µ' },
   { event: 'input', state: 'off', confirmed: true },
   { event: 'step-ended', step: 1 },
-  { event: 'ended', how: 'completed', reason: null },
+  { event: 'ended', how: 'completed', reason: null, status: 0 },
 ];
 
 /** Writes a journal as a run does, 0.1 s from event to event. */

@@ -154,7 +154,7 @@ describe('the result as JSON', () => {
     ['stopped', 'the operator stopped it', 'stopped'],
     ['failed', 'the load does not answer', 'stopped'],
   ] as const)('of a run that %s gives the reason', (how, reason, ended) => {
-    const stopped = [...events.slice(0, 200), { t: 9, event: 'ended', how, reason } as const];
+    const stopped = [...events.slice(0, 200), { t: 9, event: 'ended', how, reason, status: 3 } as const];
     expect(read(resultOf(stopped))).toMatchObject({ ended, reason });
   });
 

@@ -6,7 +6,7 @@ import { resultOf } from './fixed-record.js';
 describe('how a run ended', () => {
   it('is what its journal says', () => {
     expect(endedHow(resultOf(eventsOf([])))).toEqual({ how: 'completed', reason: null });
-    const stopped = { t: 1, event: 'ended', how: 'stopped', reason: 'over-voltage' } as const;
+    const stopped = { t: 1, event: 'ended', how: 'stopped', reason: 'over-voltage', status: 3 } as const;
     expect(endedHow(resultOf([...eventsOf([], false), stopped]))).toEqual({
       how: 'stopped',
       reason: 'over-voltage',

@@ -30,6 +30,7 @@ describe('the report for a terminal', () => {
         event: 'ended',
         how: 'stopped',
         reason: 'the load reads 61 V and the bench allows 60 V',
+        status: 3,
       } as const,
     ];
     await expect(plain(resultOf(stopped))).toMatchFileSnapshot(snapshot('stopped'));

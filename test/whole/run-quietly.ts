@@ -36,7 +36,8 @@ export async function runQuietly(
     signal: new AbortController().signal,
     watch: nobodyWatches,
   });
-  return performed.result;
+  if (performed.understood.kind === 'error') throw performed.understood.error;
+  return performed.understood.result;
 }
 
 function asRead<T>(value: T, path: string): FileRead<T> {

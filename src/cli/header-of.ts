@@ -1,0 +1,54 @@
+import type { OpenBench } from '../bench/open-bench.js';
+import type { FileRead } from '../files/read-text.js';
+import { headerFormat, type RunHeader } from '../record/run-header.js';
+import type { LoadedPlan } from './load-plan.js';
+import { packageFacts } from './package-facts.js';
+import { recordedPath } from './wiring.js';
+
+/** What a record says of its run before the run begins: all that anyone who reads it later must know. */
+export function headerOf({ plan, files }: LoadedPlan, bench: OpenBench, began: Date): RunHeader {
+  const { procedure } = plan;
+  return {
+    format: headerFormat,
+    program: packageFacts(),
+    began: began.toISOString(),
+    modules: plan.modules.map((module) => ({
+      ...module,
+      rated: { ...module.rated },
+      changes: [...module.changes],
+    })),
+    bench: {
+      name: plan.bench.name,
+      leads: plan.bench.leads,
+      voltageFrom: plan.bench.voltageFrom,
+      simulated: plan.bench.simulation !== undefined,
+    },
+    procedure: { name: procedure.name, title: procedure.title, cautions: [...procedure.cautions] },
+    steps: plan.steps.map(({ kind, summary, parameters }) => ({
+      kind: kind.kind,
+      summary,
+      settings: parameters as Record<string, unknown>,
+    })),
+    criteria: procedure.criteria.map(({ finding, requirement }) => ({ finding, requirement })),
+    derating: procedure.derating,
+    instruments: bench.instruments.map(({ role, driver, address, identity }) => ({
+      role,
+      driver: driver.name,
+      address,
+      identity,
+      accuracy: driver.accuracy,
+      ratings: driver.ratings,
+    })),
+    files: [
+      fileOf('procedure', files.procedure),
+      fileOf('bench', files.bench),
+      ...files.modules.map((module) => fileOf('module', module)),
+      fileOf('driver', files.drivers.load),
+      ...(files.drivers.meter === undefined ? [] : [fileOf('driver', files.drivers.meter)]),
+    ],
+  };
+}
+
+function fileOf(kind: string, { path, sha256, text }: FileRead<unknown>): RunHeader['files'][number] {
+  return { kind, path: recordedPath(path), sha256, text };
+}
