@@ -3,7 +3,12 @@
  *
  * @example
  * const loaded = await loadPlan({ procedure: 'real-limit', bench: 'bench.yaml', modules: ['K1.yaml'] });
- * const result = understand('runs/20261201T091500Z-K1-real-limit');
+ * const world = await worldOf(loaded.plan.bench, loaded.plan.drivers);
+ * const operator = new TerminalOperator({ input: process.stdin, output: process.stderr, yes: false });
+ * const watch = { stepBegan() {}, progress() {} };
+ * const signal = new AbortController().signal;
+ * const { folder, safety } = await performPlan(loaded, world, { runs: 'runs', operator, signal, watch });
+ * const { findings, outcome } = understand(folder.path);
  */
 export { loadPlan, type LoadedPlan } from './cli/load-plan.js';
 export { performPlan, type PlanPerformed } from './cli/perform-plan.js';
@@ -25,3 +30,7 @@ export { resultAsJson } from './report/json.js';
 export { resultAsText } from './report/text.js';
 export type { Result } from './report/result.js';
 export type { Operator, OperatorRequest } from './steps/operator.js';
+export { simulatedOperator } from './cli/simulated-operator.js';
+export type { Performed, RunWatcher } from './run/perform.js';
+export { StoppedByOperator } from './run/stopped.js';
+export { TerminalOperator } from './run/terminal-operator.js';

@@ -1,9 +1,8 @@
 import { existsSync, readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { z } from 'zod';
-import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import { NoRecordError } from '../record/record-error.js';
 import { runFolderAt } from '../record/run-folder.js';
 import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
@@ -45,7 +44,20 @@ function namesIn(folder: string): string[] {
       .filter((name) => existsSync(join(folder, name, 'run.json')))
       .sort();
   } catch (cause) {
-    throw new NoRecordError(folder, cause);
+    throw new NoRunsError(folder, cause);
+  }
+}
+
+/** There is no folder to list. */
+export class NoRunsError extends RailproofError {
+  readonly code = 'NO_RUNS';
+  readonly exitCode = exitCodes.missingFile;
+
+  constructor(folder: string, cause: unknown) {
+    super(`${folder} can't be listed: there is no such folder`, {
+      advice: 'records are kept in ./runs unless `railproof run --runs <folder>` said otherwise',
+      cause,
+    });
   }
 }
 

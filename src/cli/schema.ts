@@ -1,7 +1,7 @@
 import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
 import { fileKinds, type FileKind } from '../files/file-kind.js';
 import { jsonSchemaOf } from '../files/json-schema.js';
-import { didYouMean } from '../files/nearest.js';
+import { didYouMean } from '../quantity/nearest.js';
 import { jsonText } from '../report/json-text.js';
 import type { Streams } from './streams.js';
 import { vocabulary } from './wiring.js';

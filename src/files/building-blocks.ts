@@ -13,7 +13,7 @@ import {
 import type { Dimension, QuantityOrShare } from '../quantity/quantity.js';
 import { shown } from '../quantity/shown-text.js';
 import { namePattern } from './name-pattern.js';
-import { didYouMean } from './nearest.js';
+import { didYouMean } from '../quantity/nearest.js';
 import { found } from './plain-words.js';
 
 /** A key whose value is written as text and read into something else. */

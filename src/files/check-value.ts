@@ -1,5 +1,5 @@
 import type { z } from 'zod';
-import { nearest } from './nearest.js';
+import { nearest } from '../quantity/nearest.js';
 import { plainWords } from './plain-words.js';
 import type { Complaint } from './yaml-document.js';
 

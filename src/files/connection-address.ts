@@ -2,7 +2,7 @@ import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { shown } from '../quantity/shown-text.js';
 import type { ConnectionAddress, SerialSettings } from './bench.js';
 import { namePattern } from './name-pattern.js';
-import { didYouMean } from './nearest.js';
+import { didYouMean } from '../quantity/nearest.js';
 
 /** A text that names no way to an instrument. */
 export class AddressError extends RailproofError {

@@ -4,7 +4,7 @@ import type { Dimension } from '../quantity/quantity.js';
 import { shown } from '../quantity/shown-text.js';
 import { checkValue } from './check-value.js';
 import { namePattern } from './name-pattern.js';
-import { didYouMean } from './nearest.js';
+import { didYouMean } from '../quantity/nearest.js';
 import { found } from './plain-words.js';
 import type { Criterion, Requirement } from './procedure.js';
 import { findingDimension, type Vocabulary } from './vocabulary.js';

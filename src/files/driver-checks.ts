@@ -1,7 +1,7 @@
 import { dimensionWords } from '../quantity/dimension-words.js';
 import { shown } from '../quantity/shown-text.js';
 import { operationsOf, readingsOf, type DriverReading, type Role } from './driver.js';
-import { didYouMean } from './nearest.js';
+import { didYouMean } from '../quantity/nearest.js';
 import { readingDimensions } from './reading-dimensions.js';
 import type { Complaint } from './yaml-document.js';
 

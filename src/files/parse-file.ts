@@ -3,7 +3,7 @@ import { shown } from '../quantity/shown-text.js';
 import { checkValue } from './check-value.js';
 import { BadFileError } from './file-error.js';
 import { fileKinds, headers, type FileKind } from './file-kind.js';
-import { didYouMean } from './nearest.js';
+import { didYouMean } from '../quantity/nearest.js';
 import { found } from './plain-words.js';
 import { parseYaml, type Complaint, type YamlDocument } from './yaml-document.js';
 

@@ -1,6 +1,6 @@
 import type { z } from 'zod';
 import { shown } from '../quantity/shown-text.js';
-import { didYouMean } from './nearest.js';
+import { didYouMean } from '../quantity/nearest.js';
 
 /** An issue as zod hands it to an error map: the value is still there. */
 type RawIssue = z.core.$ZodRawIssue;

@@ -2,7 +2,7 @@ import { shown } from '../quantity/shown-text.js';
 import { checkValue } from './check-value.js';
 import { readCriterion } from './criterion.js';
 import { problemPlace } from './file-error.js';
-import { didYouMean } from './nearest.js';
+import { didYouMean } from '../quantity/nearest.js';
 import { badFile, openDocument } from './parse-file.js';
 import { found } from './plain-words.js';
 import type { Criterion, Procedure, ProcedureStep } from './procedure.js';

@@ -3,7 +3,7 @@ import { isAbsolute, join } from 'node:path';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { shown } from '../quantity/shown-text.js';
 import { namePattern } from './name-pattern.js';
-import { didYouMean } from './nearest.js';
+import { didYouMean } from '../quantity/nearest.js';
 
 /** Where names and paths lead. */
 export interface Shelves {

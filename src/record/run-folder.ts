@@ -59,8 +59,26 @@ export function writeHeader(folder: RunFolder, header: RunHeader): void {
     } finally {
       closeSync(file);
     }
+    flushFolder(folder.path);
   } catch (cause) {
     throw new RecordWriteError(path, cause);
+  }
+}
+
+/** A file survives a power cut only when its name in the folder does. Where folders can't be flushed, none need be. */
+export function flushFolder(path: string): void {
+  let folder: number;
+  try {
+    folder = openSync(path, 'r');
+  } catch {
+    return;
+  }
+  try {
+    fsyncSync(folder);
+  } catch {
+    // Some systems refuse it; they keep names by other means.
+  } finally {
+    closeSync(folder);
   }
 }
 

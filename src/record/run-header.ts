@@ -80,8 +80,6 @@ const headerSchema = z.object({
 });
 
 export type RunHeader = Readonly<z.infer<typeof headerSchema>>;
-export type RecordedInstrument = RunHeader['instruments'][number];
-export type RecordedModule = RunHeader['modules'][number];
 
 /** @throws NoRecordError, BadRecordError */
 export function readHeader(folder: string): RunHeader {

@@ -39,34 +39,6 @@ export function median(values: Values): number {
   return simple.median(fit('median', values));
 }
 
-/**
- * The value below which the share `p` of the values lies, by the convention of simple-statistics: the
- * value of rank ⌈n·p⌉, and the mean of two neighbours where n·p is whole and n is even. `sorted` must
- * ascend; `p` is from 0 to 1.
- * @throws UnfitDataError for no values, one that is not finite, values out of order, or `p` out of range.
- * @example quantileSorted([1, 2, 3, 4], 0.5); // => 2.5
- */
-export function quantileSorted(sorted: Values, p: number): number {
-  const sound = fit('quantileSorted', sorted);
-  if (!(p >= 0 && p <= 1)) throw new UnfitDataError('quantileSorted', `the share is ${p}, not from 0 to 1`);
-  for (let index = 1; index < sound.length; index += 1) {
-    if ((sound[index - 1] as number) > (sound[index] as number)) {
-      throw new UnfitDataError('quantileSorted', `value ${index + 1} is smaller than the one before it`);
-    }
-  }
-  return simple.quantileSorted(sound, p);
-}
-
-/**
- * Median of the absolute deviations from the median, unscaled (times 1.4826 it estimates the standard
- * deviation of normal values).
- * @throws UnfitDataError for no values or one that is not finite.
- * @example mad([1, 1, 2, 2, 4, 6, 9]); // => 1
- */
-export function mad(values: Values): number {
-  return simple.mad(fit('mad', values));
-}
-
 /** The library asks for a mutable array by type only: it reads, and copies before it sorts. */
 function fit(calculation: string, values: Values): number[] {
   requireFinite(calculation, values);

@@ -72,14 +72,3 @@ export class RunningMoments {
     if (this.#count === 0) throw new UnfitDataError('RunningMoments', 'there are no values');
   }
 }
-
-/** Moments of nothing yet. */
-export function emptyMoments(): RunningMoments {
-  return new RunningMoments();
-}
-
-/** Adds a value to the moments given, and hands the same moments back. */
-export function addTo(moments: RunningMoments, value: number): RunningMoments {
-  moments.add(value);
-  return moments;
-}

@@ -11,19 +11,22 @@ export interface Ended {
   readonly stderr: string;
 }
 
+interface Options {
+  readonly cwd?: string;
+  /** Options of Node itself. */
+  readonly node?: readonly string[];
+}
+
 /** A `railproof` in a process of its own, as a user has it; standard input is at its end. */
-export function start(args: readonly string[], options: { readonly cwd?: string } = {}): ChildProcess {
-  return spawn(process.execPath, [program, ...args], {
+export function start(args: readonly string[], options: Options = {}): ChildProcess {
+  return spawn(process.execPath, [...(options.node ?? []), program, ...args], {
     cwd: options.cwd ?? root,
     stdio: ['ignore', 'pipe', 'pipe'],
     env: { ...process.env, NO_COLOR: '1' },
   });
 }
 
-export async function railproof(
-  args: readonly string[],
-  options: { readonly cwd?: string } = {},
-): Promise<Ended> {
+export async function railproof(args: readonly string[], options: Options = {}): Promise<Ended> {
   return ended(start(args, options));
 }
 

@@ -4,7 +4,7 @@ import { join } from 'node:path';
 import { connect } from 'node:net';
 import { once } from 'node:events';
 import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest';
-import { ended, start } from './railproof.js';
+import { ended, railproof, start } from './railproof.js';
 import { serve, type Served } from './served.js';
 
 const folder = mkdtempSync(join(tmpdir(), 'railproof-stopping-'));
@@ -45,6 +45,7 @@ describe('a run that is stopped in the middle leaves the load off and the record
     ['SIGINT', /stopped with Ctrl-C/],
     ['SIGTERM', /SIGTERM/],
     ['SIGHUP', /SIGHUP/],
+    ['SIGQUIT', /Ctrl-\\/],
   ] as const)('by %s', async (signal, words) => {
     const runs = join(folder, `runs-${count}`);
     const child = start([
@@ -66,6 +67,29 @@ describe('a run that is stopped in the middle leaves the load off and the record
     );
   });
 
+  it('by an error that nobody foresaw', async () => {
+    const runs = join(folder, `runs-${count}`);
+    const surprise = 'data:text/javascript,process.on("SIGUSR2",()=>{throw new Error("a surprise")})';
+    const child = start(
+      [
+        ...['run', brisk, '--bench', served.bench, '--module', 'fixtures/modules/K1.yaml'],
+        ...['--runs', runs, '--yes'],
+      ],
+      { node: ['--import', surprise] },
+    );
+    const end = ended(child);
+    await energised(runs);
+    child.kill('SIGUSR2');
+    const { status, stderr } = await end;
+    expect(stderr).toMatch(/a fault of ours, please report it: Error: a surprise/);
+    expect(stderr).toContain('The load is off; it was read back.');
+    expect(status).toBe(70);
+    expect(await inputState(served.bench)).toBe('0');
+    const again = await railproof(['analyse', join(runs, readdirSync(runs)[0] ?? '')]);
+    expect(again.stdout).toContain('FAILED: a fault of ours');
+    expect(again.status).toBe(70);
+  });
+
   it('by the instruments vanishing: the last words say what to do by hand', async () => {
     const runs = join(folder, `runs-${count}`);
     const child = start([
@@ -82,6 +106,25 @@ describe('a run that is stopped in the middle leaves the load off and the record
       /THE LOAD MAY STILL BE ON\. Switch its input off at its front panel/,
     );
   });
+});
+
+it('a run on virtual time stops as well', async () => {
+  const long = join(folder, 'long.yaml');
+  writeFileSync(
+    long,
+    'railproof: procedure 1\nname: long\ntitle: Long\nsteps:\n  - load-ramp: { to: 4 A, points: 10000, readings: 200 }\n',
+  );
+  const runs = join(folder, 'runs-long');
+  const child = start([
+    ...['run', long, '--bench', 'fixtures/benches/nursery.yaml', '--module', 'fixtures/modules/K1.yaml'],
+    ...['--runs', runs],
+  ]);
+  const end = ended(child);
+  await energised(runs);
+  child.kill('SIGINT');
+  const { status, stderr } = await end;
+  expect(stderr).toContain('stopped with Ctrl-C');
+  expect(status).toBe(3);
 });
 
 async function energised(runs: string): Promise<void> {

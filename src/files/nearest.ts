@@ -1,1 +1,0 @@
-export { didYouMean, nearest } from '../quantity/nearest.js';
