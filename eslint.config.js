@@ -14,7 +14,7 @@ export const mayImport = {
   files: ['errors', 'quantity'],
   instrument: ['errors', 'clock', 'quantity', 'files'],
   bench: ['errors', 'clock', 'quantity', 'files', 'instrument'],
-  steps: ['errors', 'clock', 'quantity', 'files', 'record', 'bench'],
+  steps: ['errors', 'clock', 'quantity', 'statistics', 'files', 'record', 'bench'],
   run: ['errors', 'clock', 'quantity', 'files', 'record', 'bench', 'steps'],
   simulation: ['errors', 'clock', 'quantity', 'files', 'instrument', 'circuit'],
   analysis: ['errors', 'quantity', 'statistics', 'circuit', 'record'],

@@ -1,4 +1,6 @@
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Amperes } from '../quantity/quantity.js';
 
 /** A reading went beyond a limit: the run stops and the bench is made safe. */
 export class GuardTrippedError extends RailproofError {
@@ -36,6 +38,32 @@ export class BeyondCeilingError extends RailproofError {
       advice: 'lower what the procedure asks, or use a bench that allows it',
     });
     this.setBy = setBy;
+  }
+}
+
+/**
+ * The load's input is off and nobody here switched it off, while the module still gives its voltage: what no
+ * longer flows is the load's doing, and says nothing of the module.
+ */
+export class LoadSwitchedOffError extends RailproofError {
+  readonly code = 'LOAD_SWITCHED_OFF';
+  readonly exitCode = exitCodes.stopped;
+  readonly address: string;
+  /** What the load had been set to. */
+  readonly current: Amperes;
+
+  constructor(address: string, current: Amperes) {
+    const at = formatQuantity(current, 'current', { significant: 4 });
+    super(
+      `the load at ${address} switched its input off by itself at ${at}: its own protection, or someone at its panel`,
+      {
+        advice:
+          "no dropout was recorded there; look at the load's panel for what it protects itself against, and " +
+          'ask for less than that, or begin again when nobody else uses it',
+      },
+    );
+    this.address = address;
+    this.current = current;
   }
 }
 

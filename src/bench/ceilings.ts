@@ -23,7 +23,16 @@ export interface Ceiling {
  */
 export const overCurrentFactor = 1.1;
 
-/** The strictest of the bench's limits and the ratings of the instruments that carry the quantity. */
+/**
+ * Part of its rated current that a load is asked for at most. It protects itself at its rating, and its own
+ * error must not carry it there: the protection trips 5 % above the highest set-point, or further.
+ */
+const ofRatedCurrent = 0.95;
+
+/**
+ * The strictest of the bench's limits and the ratings of the instruments that carry the quantity; the load's
+ * rated current counts less 5 %.
+ */
 export function ceilingsOf(
   bench: Bench,
   drivers: { readonly load: Driver; readonly meter?: Driver | undefined },
@@ -35,10 +44,7 @@ export function ceilingsOf(
       rating(load.ratings.voltage, "the load's rating"),
       rating(meter?.ratings.voltage, "the meter's rating"),
     ),
-    current: strictest(
-      { value: bench.limits.current, setBy: 'the bench' },
-      rating(load.ratings.current, "the load's rating"),
-    ),
+    current: strictest({ value: bench.limits.current, setBy: 'the bench' }, lessRoom(load.ratings.current)),
     power: strictest(
       { value: bench.limits.power, setBy: 'the bench' },
       rating(load.ratings.power, "the load's rating"),
@@ -48,6 +54,12 @@ export function ceilingsOf(
 
 function rating(value: number | undefined, setBy: string): Ceiling | undefined {
   return value === undefined ? undefined : { value, setBy };
+}
+
+/** To the milliampere, as nobody reads more in a message. */
+function lessRoom(amps: number | undefined): Ceiling | undefined {
+  if (amps === undefined) return undefined;
+  return { value: Math.round(amps * ofRatedCurrent * 1000) / 1000, setBy: "the load's rating less 5 %" };
 }
 
 function strictest(first: Ceiling, ...others: readonly (Ceiling | undefined)[]): Ceiling {

@@ -1,5 +1,5 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Volts } from '../quantity/quantity.js';
+import type { Dimension, Volts } from '../quantity/quantity.js';
 import { GuardTrippedError } from './bench-error.js';
 import { type Ceilings, overCurrentFactor } from './ceilings.js';
 import type { Taken } from './sample.js';
@@ -33,14 +33,14 @@ function guardVoltage(of: string, volts: number, limits: GuardLimits): void {
   if (volts > limits.voltage.value) {
     throw new GuardTrippedError(
       'over-voltage',
-      `the ${of} reads ${formatQuantity(volts, 'voltage')} and ${limits.voltage.setBy} allows ${formatQuantity(limits.voltage.value, 'voltage')}`,
+      `the ${of} reads ${reading(volts, 'voltage')} and ${limits.voltage.setBy} allows ${formatQuantity(limits.voltage.value, 'voltage')}`,
       'the module gives more than this bench is made for',
     );
   }
   if (volts < -limits.ratedVoltage / 50) {
     throw new GuardTrippedError(
       'reversed-polarity',
-      `the ${of} reads ${formatQuantity(volts, 'voltage')}: the polarity is reversed`,
+      `the ${of} reads ${reading(volts, 'voltage')}: the polarity is reversed`,
       'swap the leads at the module',
     );
   }
@@ -50,19 +50,49 @@ function guardCurrent(of: string, amps: number, limits: GuardLimits): void {
   if (amps <= limits.current.value * overCurrentFactor) return;
   throw new GuardTrippedError(
     'over-current',
-    `the ${of} reads ${formatQuantity(amps, 'current')} and ${limits.current.setBy} allows ${formatQuantity(limits.current.value, 'current')}`,
+    `the ${of} reads ${reading(amps, 'current')} and ${limits.current.setBy} allows ${formatQuantity(limits.current.value, 'current')}`,
     'the load does not keep its set current',
   );
 }
 
+/** Where the load can't read its voltage the meter's stands in for it, a little above as it is. */
 function guardPower(taken: readonly Taken[], limits: GuardLimits): void {
-  const power = valueOf(taken, 'load', 'voltage') * valueOf(taken, 'load', 'current');
+  const atLoad = valueOf(taken, 'load', 'voltage');
+  const volts = Number.isNaN(atLoad) ? valueOf(taken, 'meter', 'voltage') : atLoad;
+  const power = volts * valueOf(taken, 'load', 'current');
   if (!(power > limits.power.value)) return;
   throw new GuardTrippedError(
     'over-power',
-    `the load takes ${formatQuantity(power, 'power')} and ${limits.power.setBy} allows ${formatQuantity(limits.power.value, 'power')}`,
+    `the load takes ${reading(power, 'power')} and ${limits.power.setBy} allows ${formatQuantity(limits.power.value, 'power')}`,
     'lower what the procedure asks, or use a larger load',
   );
+}
+
+/** A reading may be disturbed; so many in a row are no disturbance. */
+const mostBlind = 3;
+
+/**
+ * Counts the samples in a row of which nothing can be told, because a value that is needed could not be
+ * read. A run that sees nothing is unguarded, and would take what it can't see for a dropout.
+ */
+export class BlindSamples {
+  #inARow = 0;
+
+  /** @throws GuardTrippedError `no-reading` at the third blind sample in a row. */
+  count(unread: 'voltage' | 'current' | undefined): void {
+    this.#inARow = unread === undefined ? 0 : this.#inARow + 1;
+    if (unread === undefined || this.#inARow < mostBlind) return;
+    throw new GuardTrippedError(
+      'no-reading',
+      `${this.#inARow} times in a row the ${unread} could not be read`,
+      'check the ranges, the leads and the instrument that should read it',
+    );
+  }
+}
+
+/** What was read, to four digits; limits are written as they were set. */
+function reading(value: number, dimension: Dimension): string {
+  return formatQuantity(value, dimension, { significant: 4 });
 }
 
 /** Not a number when it was not read. */

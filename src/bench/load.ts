@@ -2,7 +2,7 @@ import type { Instrument } from '../instrument/instrument.js';
 import { InstrumentComplainedError } from '../instrument/instrument-errors.js';
 import type { Measurement } from '../instrument/scpi-number.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Amperes } from '../quantity/quantity.js';
+import type { Amperes, Volts } from '../quantity/quantity.js';
 import { BeyondCeilingError, DisobeyedError } from './bench-error.js';
 import { type Ceilings, overCurrentFactor } from './ceilings.js';
 
@@ -26,7 +26,7 @@ export class Load {
   /** Constant-current mode at 0 A, the load's own protections set where it has them. The input is not touched. */
   async prepare(): Promise<void> {
     await this.instrument.perform('current-mode');
-    await this.setCurrent(0);
+    await this.unload();
     if (this.instrument.has('protect-current')) {
       await this.instrument.perform('protect-current', { amps: this.#mostCurrent() });
     }
@@ -35,14 +35,29 @@ export class Load {
     }
   }
 
-  /** @throws BeyondCeilingError before anything is sent. */
-  async setCurrent(amps: Amperes): Promise<void> {
-    const ceiling = this.#ceilings.current;
-    if (!(amps <= ceiling.value)) {
+  /** A set-point of 0 A; the input is not touched. */
+  async unload(): Promise<void> {
+    await this.instrument.perform('set-current', { amps: 0 });
+  }
+
+  /**
+   * `volts` is the highest voltage that the module may keep at that current: its open-circuit voltage. So the
+   * power is known before it flows.
+   * @throws BeyondCeilingError before anything is sent.
+   */
+  async setCurrent(amps: Amperes, volts: Volts): Promise<void> {
+    const { current, power } = this.#ceilings;
+    const asked = formatQuantity(amps, 'current', { significant: 4 });
+    if (!(amps <= current.value)) {
+      throw new BeyondCeilingError(asked, formatQuantity(current.value, 'current'), current.setBy);
+    }
+    if (!(amps * volts <= power.value)) {
+      const at = formatQuantity(volts, 'voltage', { significant: 4 });
+      const taken = formatQuantity(amps * volts, 'power', { significant: 4 });
       throw new BeyondCeilingError(
-        formatQuantity(amps, 'current'),
-        formatQuantity(ceiling.value, 'current'),
-        ceiling.setBy,
+        `${asked} at ${at}, which is ${taken},`,
+        formatQuantity(power.value, 'power'),
+        power.setBy,
       );
     }
     await this.instrument.perform('set-current', { amps: Math.max(0, amps) });
@@ -81,8 +96,8 @@ export class Load {
   }
 
   /**
-   * A load whose own error carries it over the ceiling must not switch itself off there, as that would be
-   * taken for a dropout of the module.
+   * A load whose own error carries it over the ceiling must not switch itself off there: that would end the
+   * run. The ceiling leaves 5 % below the rating.
    */
   #mostCurrent(): Amperes {
     const rated = this.instrument.driver.ratings.current ?? Number.POSITIVE_INFINITY;

@@ -1,8 +1,8 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import { PreFlightError } from './bench-error.js';
+import { moduleVoltage } from './module-voltage.js';
 import type { OpenBench } from './open-bench.js';
-import { valueOf } from './guards.js';
 
 /** @throws PreFlightError when the load's input is on before the run has begun. */
 export async function checkInputIsOff(bench: OpenBench): Promise<void> {
@@ -25,12 +25,11 @@ const nothing = 0.05;
  */
 export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): Promise<Volts> {
   const taken = await bench.sample(() => undefined);
-  const volts =
-    bench.meter === undefined ? valueOf(taken, 'load', 'voltage') : valueOf(taken, 'meter', 'voltage');
+  const volts = moduleVoltage(bench, taken);
   if (Number.isNaN(volts)) {
     throw new PreFlightError(
       'the voltage of the module could not be read',
-      'check the range and the leads of the meter',
+      `check the range and the leads of the ${bench.description.voltageFrom === 'meter-at-module' ? 'meter' : 'load'}`,
     );
   }
   const read = formatQuantity(volts, 'voltage', { significant: 4 });

@@ -6,6 +6,7 @@ import { defineStep } from './define-step.js';
 import { holds } from './holding.js';
 import { openCircuitVoltage } from './known-voltage.js';
 import { Points } from './point.js';
+import { longestDwell } from './dwell.js';
 
 const readingTime = 0.1;
 
@@ -16,7 +17,10 @@ export const loadRamp = defineStep({
     from: quantityOrShare('current', 'the first point', { least: 0 }).prefault('0 A'),
     to: quantityOrShare('current', 'the last point', { above: 0 }),
     points: count('how many points, both ends included', { least: 2, most: 10_000 }).default(21),
-    dwell: quantity('time', 'settling before the first reading of a point', { least: 0 }).prefault('500 ms'),
+    dwell: quantity('time', 'settling before the first reading of a point', {
+      least: 0,
+      most: longestDwell,
+    }).prefault('500 ms'),
     readings: count('how many readings at a point', { least: 2, most: 10_000 }).default(5),
     sag: quantity(
       'ratio',
@@ -31,6 +35,7 @@ export const loadRamp = defineStep({
   needs: { liveModule: true, operator: 'never' },
   references: ({ from, to }) => ({ from, to }),
   currents: ['from', 'to'],
+  rises: { from: 'from', to: 'to', mayBeLevel: true },
   describe: ({ points, from, to }) =>
     `${points} points from ${formatShare(from, 'current')} to ${formatShare(to, 'current')}`,
   duration: ({ points, dwell, readings }) => points * (dwell + readings * readingTime),
@@ -39,11 +44,13 @@ export const loadRamp = defineStep({
     const from = resolve(parameters.from, context.known);
     const to = resolve(parameters.to, context.known);
     const voltage = openCircuitVoltage(context);
-    await load.setCurrent(0);
+    await load.unload();
     await load.inputOn();
     const points = new Points(context);
     for (let index = 0; index < parameters.points; index += 1) {
-      const current = from + ((to - from) * index) / (parameters.points - 1);
+      const share = index / (parameters.points - 1);
+      // The last one exactly: rounding must not carry it beyond what the bench allows.
+      const current = share === 1 ? to : from + (to - from) * share;
       const { outcome } = await points.take({
         phase: 'ramp',
         set: { current },
@@ -59,7 +66,7 @@ export const loadRamp = defineStep({
         break;
       }
     }
-    await load.setCurrent(0);
+    await load.unload();
     await load.inputOff();
   },
 });

@@ -1,17 +1,22 @@
 import { z } from 'zod';
 import { quantity } from '../files/building-blocks.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Seconds } from '../quantity/quantity.js';
+import { RunningMoments } from '../statistics/running-moments.js';
 import { defineStep } from './define-step.js';
 import { Points } from './point.js';
 
 /** Samples in one point: enough for a spread, few enough that a drift shows between points. */
 const samplesAtOnce = 5;
 const betweenPoints = 0.5;
+const day: Seconds = 24 * 3600;
 
 export const openCircuit = defineStep({
   kind: 'open-circuit',
   summary: 'input off: the voltage of the idle module, and whether it drifts',
-  parameters: z.strictObject({ for: quantity('time', 'how long to look', { above: 0 }).prefault('5 s') }),
+  parameters: z.strictObject({
+    for: quantity('time', 'how long to look', { above: 0, most: day }).prefault('5 s'),
+  }),
   measures: ['open-circuit-voltage'],
   needs: { liveModule: true, operator: 'never' },
   references: () => ({}),
@@ -22,23 +27,17 @@ export const openCircuit = defineStep({
     await context.bench.load.inputOff();
     const points = new Points(context);
     const end = context.clock.now() + parameters.for;
-    let sum = 0;
-    let count = 0;
+    const ofPoints = new RunningMoments();
     do {
-      const { samples } = await points.take({
+      const { voltage } = await points.take({
         phase: 'idle',
         set: {},
         dwell: betweenPoints,
         readings: samplesAtOnce,
         judge: () => 'measured',
       });
-      for (const { voltage } of samples) {
-        if (Number.isNaN(voltage)) continue;
-        sum += voltage;
-        count += 1;
-      }
+      ofPoints.add(voltage.mean);
     } while (context.clock.now() < end);
-    // Where nothing could be read, nothing is known: the nameplate goes on standing in for it.
-    if (count > 0) context.known['open-circuit-voltage'] = sum / count;
+    context.known['open-circuit-voltage'] = ofPoints.mean;
   },
 });

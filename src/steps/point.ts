@@ -1,19 +1,25 @@
-import { guard, valueOf } from '../bench/guards.js';
-import type { Taken } from '../bench/sample.js';
+import { LoadSwitchedOffError } from '../bench/bench-error.js';
+import { BlindSamples, guard, valueOf } from '../bench/guards.js';
+import { moduleVoltage } from '../bench/module-voltage.js';
 import type { Amperes, Seconds, Volts } from '../quantity/quantity.js';
 import type { Phase, PointOutcome } from '../record/journal-event.js';
+import { RunningMoments } from '../statistics/running-moments.js';
+import { flows, isGone } from './holding.js';
+import { openCircuitVoltage } from './known-voltage.js';
 import type { StepContext } from './step-kind.js';
 
 /** What one sample says of the module, as far as a step must know it to go on. */
 export interface Seen {
   readonly t: Seconds;
-  /** At the module; not a number when it could not be read. */
+  /** At the module. */
   readonly voltage: Volts;
+  /** Not a number when it could not be read, which is let pass while nothing is set. */
   readonly current: Amperes;
 }
 
 export interface PointPlan {
   readonly phase: Phase;
+  /** With a current, the load's input is on. */
   readonly set: { readonly current?: Amperes };
   /** Wait between the set-point and the first reading. */
   readonly dwell: Seconds;
@@ -26,9 +32,16 @@ export interface PointPlan {
   readonly until?: (seen: Seen, outcome: PointOutcome) => boolean;
 }
 
+/** What a point amounts to; its readings are in the journal and are not kept here. */
 export interface PointSeen {
   readonly outcome: PointOutcome;
-  readonly samples: readonly Seen[];
+  /** Of the module's voltage. */
+  readonly voltage: RunningMoments;
+  /** Of the last sample, and of the one before where there was one. */
+  readonly last: Seconds;
+  readonly before: Seconds | undefined;
+  /** At the end of it: `let-go` when the load switched its input off as the module's voltage went. */
+  readonly load: 'as-told' | 'let-go';
 }
 
 const longestStagger: Seconds = 0.02;
@@ -46,15 +59,21 @@ function stagger(sample: number): Seconds {
 /** The points of one step, numbered as they are taken. */
 export class Points {
   readonly #context: StepContext;
+  readonly #openCircuit: Volts;
+  readonly #blind = new BlindSamples();
   #count = 0;
 
   constructor(context: StepContext) {
     this.#context = context;
+    this.#openCircuit = openCircuitVoltage(context);
   }
 
   /**
    * One point: set, wait, read several times; everything is in the journal before the next thing happens,
-   * and every sample has passed the guards.
+   * and every sample has passed the guards. A sample in which the voltage, or the current that was set,
+   * could not be read is not judged, and the point ends with none such.
+   * @throws LoadSwitchedOffError when the load's input is off and the module's voltage is there; the point
+   * then ends without an outcome.
    */
   async take(plan: PointPlan): Promise<PointSeen> {
     const { bench, journal, clock, signal, step } = this.#context;
@@ -62,21 +81,38 @@ export class Points {
     this.#count += 1;
     const point = this.#count;
     journal.append({ event: 'point-began', step, point, phase: plan.phase, set: plan.set });
-    if (plan.set.current !== undefined) await bench.load.setCurrent(plan.set.current);
+    if (plan.set.current !== undefined) await bench.load.setCurrent(plan.set.current, this.#openCircuit);
     const settling = bench.instruments.map(({ driver }) => driver.settling);
     await clock.sleep(Math.max(plan.dwell, ...settling), signal);
+    const { last, ...rest } = await this.#read(plan, point);
+    const load = await this.#loadAfter(plan.set.current, last);
+    journal.append({ event: 'point-ended', step, point, outcome: rest.outcome });
+    return { ...rest, last: last.t, load };
+  }
+
+  async #read(
+    plan: PointPlan,
+    point: number,
+  ): Promise<Pick<PointSeen, 'outcome' | 'voltage' | 'before'> & { readonly last: Seen }> {
+    const { clock, signal } = this.#context;
+    const { current: set } = plan.set;
     const ends = plan.until ?? ((_seen, judged) => judged === 'dropped');
-    const samples: Seen[] = [];
-    let outcome: PointOutcome = 'measured';
-    for (let sample = 1; sample <= plan.readings; sample += 1) {
+    const voltage = new RunningMoments();
+    let last: Seen | undefined;
+    for (let sample = 1; ; sample += 1) {
       if (sample > 1) await clock.sleep(plan.every ?? stagger(sample), signal);
-      const seen = await this.#sample(point, sample, plan.set.current);
-      samples.push(seen);
-      outcome = plan.judge(seen);
-      if (ends(seen, outcome)) break;
+      const seen = await this.#sample(point, sample, set);
+      const unread = unreadIn(seen, set);
+      this.#blind.count(unread);
+      if (unread !== undefined) continue;
+      voltage.add(seen.voltage);
+      const outcome = plan.judge(seen);
+      const idle = set !== undefined && !flows(set, seen.current);
+      if (idle && !isGone(seen.voltage, this.#openCircuit)) await this.#loadAfter(set, seen);
+      const before = last?.t;
+      last = seen;
+      if (sample >= plan.readings || ends(seen, outcome)) return { outcome, voltage, before, last };
     }
-    journal.append({ event: 'point-ended', step, point, outcome });
-    return { outcome, samples };
   }
 
   async #sample(point: number, sample: number, setCurrent: Amperes | undefined): Promise<Seen> {
@@ -92,7 +128,7 @@ export class Points {
     guard(taken, limits);
     const seen = {
       t: clock.now(),
-      voltage: moduleVoltage(this.#context, taken),
+      voltage: moduleVoltage(bench, taken),
       current: valueOf(taken, 'load', 'current'),
     };
     show({
@@ -102,18 +138,23 @@ export class Points {
     });
     return seen;
   }
+
+  /** What has become of the load's input, which was on if a current was set. */
+  async #loadAfter(set: Amperes | undefined, { voltage }: Seen): Promise<PointSeen['load']> {
+    if (set === undefined) return 'as-told';
+    const { bench, journal, signal } = this.#context;
+    signal.throwIfAborted();
+    if (await bench.load.isOn()) return 'as-told';
+    if (!isGone(voltage, this.#openCircuit)) throw new LoadSwitchedOffError(bench.load.address, set);
+    journal.append({
+      event: 'notice',
+      text: "the module's voltage is gone and the load has switched its input off: taken for a dropout of the module",
+    });
+    return 'let-go';
+  }
 }
 
-/** The meter's voltage where there is one; otherwise the load's, and what the leads lose. */
-export function moduleVoltage({ bench }: StepContext, taken: readonly Taken[]): Volts {
-  if (bench.description.voltageFrom === 'meter-at-module') return valueOf(taken, 'meter', 'voltage');
-  const current = valueOf(taken, 'load', 'current');
-  return valueOf(taken, 'load', 'voltage') + current * bench.description.leads.resistance;
-}
-
-/** The last digit of the instrument that `moduleVoltage` comes from; 0 when its driver does not say. */
-export function voltageResolution({ bench }: StepContext): Volts {
-  const instrument =
-    bench.description.voltageFrom === 'meter-at-module' ? bench.meter : bench.load.instrument;
-  return instrument?.driver.accuracy['voltage']?.resolution ?? 0;
+function unreadIn({ voltage, current }: Seen, set: Amperes | undefined): 'voltage' | 'current' | undefined {
+  if (Number.isNaN(voltage)) return 'voltage';
+  return set !== undefined && Number.isNaN(current) ? 'current' : undefined;
 }

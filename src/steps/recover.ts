@@ -60,7 +60,7 @@ async function waitForVoltage(
   least: Volts,
   patience: Seconds,
 ): Promise<{ back: boolean; after: Seconds; within: Seconds }> {
-  const { outcome, samples } = await points.take({
+  const { outcome, before, last } = await points.take({
     phase: 'recovery',
     set: {},
     dwell: 0,
@@ -69,7 +69,5 @@ async function waitForVoltage(
     judge: ({ voltage }) => (voltage >= least ? 'held' : 'dropped'),
     until: ({ t }, judged) => judged === 'held' || t - start > patience,
   });
-  const after = samples.at(-2)?.t ?? start;
-  const within = samples.at(-1)?.t ?? start;
-  return { back: outcome === 'held', after: after - start, within: within - start };
+  return { back: outcome === 'held', after: (before ?? start) - start, within: last - start };
 }

@@ -1,11 +1,12 @@
+import { voltageResolution } from '../bench/module-voltage.js';
 import type { Amperes, Ratio, Seconds, Volts } from '../quantity/quantity.js';
 import type { Phase } from '../record/journal-event.js';
 import { holds } from './holding.js';
 import { openCircuitVoltage } from './known-voltage.js';
-import { type PointSeen, Points, voltageResolution } from './point.js';
+import { type PointSeen, Points } from './point.js';
 import { comeBack } from './recover.js';
 import type { StepContext } from './step-kind.js';
-import { firstUnsteady, type Probe } from './steadiness.js';
+import { firstUnsteady, type Probe, probeOf } from './steadiness.js';
 
 /** All in amperes, seconds and ratios; what each means stands in the step's schema. */
 export interface SearchParameters {
@@ -57,12 +58,12 @@ export class Search {
     this.#context = context;
     this.#points = new Points(context);
     this.#openCircuit = openCircuitVoltage(context);
-    this.#resolution = voltageResolution(context);
+    this.#resolution = voltageResolution(context.bench);
   }
 
   async run(): Promise<Bracket> {
     const { load } = this.#context.bench;
-    await load.setCurrent(0);
+    await load.unload();
     await load.inputOn();
     await this.#probe('start', Math.min(this.#parameters.from, this.#parameters.ceiling));
     await this.#climb();
@@ -70,7 +71,7 @@ export class Search {
     await this.#closeInOnSteadiness();
     // Looking for steadiness may have shown that the limit has come down since.
     await this.#halve();
-    await load.setCurrent(0);
+    await load.unload();
     await load.inputOff();
     return { held: this.#held, dropped: this.#dropped };
   }
@@ -103,7 +104,7 @@ export class Search {
 
   async #probe(phase: Phase, current: Amperes): Promise<void> {
     const seen = await this.#take(phase, current);
-    this.#probes.push({ current, ...seen });
+    this.#probes.push(probeOf(current, seen));
     if (seen.outcome === 'held') {
       this.#held = Math.max(this.#held, current);
       return;
@@ -111,7 +112,8 @@ export class Search {
     this.#dropped = Math.min(this.#dropped ?? Number.POSITIVE_INFINITY, current);
     // What was held above it earlier proves nothing any more.
     if (this.#held >= current) this.#held = Math.max(0, current - this.#retreat());
-    if (!this.#watched) await this.#watch(current);
+    // A load that has let go overloads nothing any more.
+    if (!this.#watched && seen.load === 'as-told') await this.#watch(current);
     await this.#return();
   }
 
@@ -126,7 +128,7 @@ export class Search {
     const end = clock.now() + this.#parameters.watch;
     let before = clock.now();
     let count = 0;
-    const { samples } = await this.#points.take({
+    const { last } = await this.#points.take({
       phase: 'overload',
       set: { current },
       dwell: 0,
@@ -140,7 +142,7 @@ export class Search {
         return count >= fewestLooks && next > end;
       },
     });
-    await clock.sleep(Math.max(0, end - (samples.at(-1)?.t ?? end)), signal);
+    await clock.sleep(Math.max(0, end - last), signal);
   }
 
   /** Load off, module back, and the known good current proved; where it no longer holds, a lower one. */
@@ -157,11 +159,11 @@ export class Search {
         this.#givenUp = true;
         return;
       }
-      await load.setCurrent(0);
+      await load.unload();
       await load.inputOn();
       if (this.#held === 0) return;
       const seen = await this.#take('return', this.#held);
-      this.#probes.push({ current: this.#held, ...seen });
+      this.#probes.push(probeOf(this.#held, seen));
       if (seen.outcome === 'held') return;
       this.#dropped = this.#held;
       this.#held = Math.max(0, this.#held - this.#retreat());

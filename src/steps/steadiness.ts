@@ -1,8 +1,17 @@
 import type { Amperes, Volts } from '../quantity/quantity.js';
+import type { PointOutcome } from '../record/journal-event.js';
+import { median } from '../statistics/checked.js';
 import type { PointSeen } from './point.js';
 
-export interface Probe extends PointSeen {
+export interface Probe {
   readonly current: Amperes;
+  readonly outcome: PointOutcome;
+  /** Standard deviation of the readings; undefined where there was one only. */
+  readonly spread: Volts | undefined;
+}
+
+export function probeOf(current: Amperes, { outcome, voltage }: PointSeen): Probe {
+  return { current, outcome, spread: voltage.sampleDeviation };
 }
 
 /** A spread this many times the usual one is an oscillation. */
@@ -20,8 +29,9 @@ export function firstUnsteady(
   resolution: Volts,
 ): { readonly steady: Amperes; readonly unsteady: Amperes } | undefined {
   const held = probes
-    .filter((probe) => probe.outcome === 'held')
-    .map(({ current, samples }) => ({ current, spread: spreadOf(samples.map((seen) => seen.voltage)) }))
+    .flatMap(({ outcome, current, spread }) =>
+      outcome === 'held' && spread !== undefined ? [{ current, spread }] : [],
+    )
     .sort((one, other) => one.current - other.current);
   const [lowest] = held;
   const highest = held.at(-1);
@@ -40,16 +50,4 @@ export function firstUnsteady(
 
 function isMostly(flags: readonly boolean[]): boolean {
   return flags.filter(Boolean).length * 2 >= flags.length;
-}
-
-function median(values: readonly number[]): number {
-  const sorted = values.toSorted((one, other) => one - other);
-  const middle = Math.floor(sorted.length / 2);
-  const upper = sorted[middle] ?? Number.NaN;
-  return sorted.length % 2 === 1 ? upper : ((sorted[middle - 1] ?? upper) + upper) / 2;
-}
-
-function spreadOf(values: readonly number[]): number {
-  const mean = values.reduce((sum, value) => sum + value, 0) / values.length;
-  return Math.sqrt(values.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (values.length - 1));
 }

@@ -28,6 +28,8 @@ export interface StepKind<Parameters = unknown> {
   references(parameters: Parameters): Readonly<Record<string, QuantityOrShare>>;
   /** The parameters among `references` that are currents the load will be set to. */
   readonly currents: readonly string[];
+  /** Two of `currents`, the first of which must be the lower one. */
+  readonly rises?: { readonly from: string; readonly to: string; readonly mayBeLevel: boolean };
   /** A sentence for the plan: `21 points from 0 A to 100 % of rated-current`. */
   describe(parameters: Parameters): string;
   /** A rough idea of how long it takes, for the time that remains. */

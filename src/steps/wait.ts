@@ -1,12 +1,15 @@
 import { z } from 'zod';
 import { quantity } from '../files/building-blocks.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Seconds } from '../quantity/quantity.js';
 import { defineStep } from './define-step.js';
+
+const day: Seconds = 24 * 3600;
 
 export const wait = defineStep({
   kind: 'wait',
-  summary: 'waits, with the load as the step before left it',
-  parameters: z.strictObject({ for: quantity('time', 'how long to wait', { least: 0 }) }),
+  summary: 'waits, with the load as the step before left it: off',
+  parameters: z.strictObject({ for: quantity('time', 'how long to wait', { least: 0, most: day }) }),
   measures: [],
   needs: { liveModule: false, operator: 'never' },
   references: () => ({}),

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { guard, type GuardLimits, valueOf } from '../../src/bench/guards.js';
+import { BlindSamples, guard, type GuardLimits, valueOf } from '../../src/bench/guards.js';
 import type { Taken } from '../../src/bench/sample.js';
 
 const limits: GuardLimits = {
@@ -44,31 +44,43 @@ describe('a guard stops the run, saying what was read and who set the limit, at'
       'over-voltage',
       'over-voltage',
       sample(value(60.4), value(15), value(0)),
-      'the meter reads 60.4 V and the bench allows 60 V',
+      'the meter reads 60.40 V and the bench allows 60 V',
     ],
     [
       'over-voltage at the load',
       'over-voltage',
       sample(value(15), value(61), value(0)),
-      'the load reads 61 V and the bench allows 60 V',
+      'the load reads 61.00 V and the bench allows 60 V',
     ],
     [
       'reversed polarity',
       'reversed-polarity',
       sample(value(-15.2), value(-15.2), value(0)),
-      'the meter reads -15.2 V: the polarity is reversed',
+      'the meter reads -15.20 V: the polarity is reversed',
     ],
     [
       'over-current',
       'over-current',
       sample(value(15), value(15), value(9)),
-      'the load reads 9 A and the bench allows 8 A',
+      'the load reads 9.000 A and the bench allows 8 A',
     ],
     [
       'over-power',
       'over-power',
       sample(value(30), value(29), value(6)),
-      "the load takes 174 W and the load's rating allows 150 W",
+      "the load takes 174.0 W and the load's rating allows 150 W",
+    ],
+    [
+      'over-power where the load can not read its voltage',
+      'over-power',
+      sample(value(30), nothing, value(6)),
+      "the load takes 180.0 W and the load's rating allows 150 W",
+    ],
+    [
+      'over-power by little, to four digits and no more',
+      'over-power',
+      sample(value(30), value(30.123456789), value(5)),
+      "the load takes 150.6 W and the load's rating allows 150 W",
     ],
     [
       'an overload of the meter',
@@ -106,6 +118,35 @@ describe('a guard stops the run, saying what was read and who set the limit, at'
         },
       ),
     );
+  });
+});
+
+describe('samples that show nothing', () => {
+  it('stop the run at the third in a row', () => {
+    const blind = new BlindSamples();
+    blind.count('voltage');
+    blind.count('current');
+    expect(() => {
+      blind.count('voltage');
+    }).toThrow(
+      expect.objectContaining({
+        code: 'GUARD_TRIPPED',
+        exitCode: 3,
+        guard: 'no-reading',
+        message: '3 times in a row the voltage could not be read',
+      }),
+    );
+  });
+
+  it('are let pass while there is one between them that shows something', () => {
+    const blind = new BlindSamples();
+    expect(() => {
+      for (let round = 0; round < 100; round += 1) {
+        blind.count('voltage');
+        blind.count('voltage');
+        blind.count(undefined);
+      }
+    }).not.toThrow();
   });
 });
 

@@ -28,7 +28,7 @@ describe('the load of a bench', () => {
     });
     await load.prepare();
     await load.inputOn();
-    await load.setCurrent(5);
+    await load.setCurrent(5, 15);
     expect(world.load.protection.current).toBeCloseTo(5.5, 9);
     expect(world.load.input).toBe('on');
   });
@@ -61,9 +61,9 @@ describe('the load of a bench', () => {
     'refuses to be set to %d A before anything is sent',
     async (amps) => {
       const { load, world, clock } = await opened();
-      await load.setCurrent(1);
+      await load.setCurrent(1, 15);
       const before = clock.now();
-      await expect(load.setCurrent(amps)).rejects.toMatchObject({
+      await expect(load.setCurrent(amps, 15)).rejects.toMatchObject({
         code: 'BEYOND_CEILING',
         exitCode: 3,
         setBy: 'the bench',
@@ -75,9 +75,42 @@ describe('the load of a bench', () => {
     },
   );
 
+  it('refuses more power than is allowed at the voltage that the module has, before anything is sent', async () => {
+    const { load, world, clock } = await opened({ limits: { power: 60 } });
+    await load.setCurrent(4, 15);
+    const before = clock.now();
+    await expect(load.setCurrent(4, 15.21)).rejects.toMatchObject({
+      code: 'BEYOND_CEILING',
+      exitCode: 3,
+      setBy: 'the bench',
+      message: '4.000 A at 15.21 V, which is 60.84 W, was asked for and the bench allows 60 W',
+    });
+    await expect(load.setCurrent(1, Number.NaN)).rejects.toMatchObject({ code: 'BEYOND_CEILING' });
+    expect(world.load.setCurrent).toBe(4);
+    expect(clock.now()).toBe(before);
+  });
+
+  it('leaves room between the highest set-point and where it protects itself, up to its rating', async () => {
+    const { load, bench, world } = await opened({
+      limits: { current: 100 },
+      load: { ratings: { current: 4.6 } },
+      simulation: {
+        instruments: { load: { errors: { 'set-current': { gain: 0.004, offset: 0.01, resolution: 0 } } } },
+      },
+    });
+    await load.prepare();
+    await load.inputOn();
+    await load.setCurrent(bench.ceilings.current.value, 15);
+    expect(world.load.setCurrent).toBeCloseTo(4.37, 9);
+    expect(world.load.protection.current).toBe(4.6);
+    expect(world.load.input).toBe('on');
+    await load.unload();
+    expect(world.load.setCurrent).toBe(0);
+  });
+
   it('takes a current that came out a hair below zero for none', async () => {
     const { load, world } = await opened();
-    await load.setCurrent(-1e-17);
+    await load.setCurrent(-1e-17, 15);
     expect(world.load.setCurrent).toBe(0);
   });
 

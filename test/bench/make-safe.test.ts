@@ -11,7 +11,7 @@ async function atWork(change: NurseryChange = {}) {
   const place = await nursery({ onInput: (...each) => told.push(each), ...change });
   const bench = await place.open();
   await bench.load.prepare();
-  await bench.load.setCurrent(4);
+  await bench.load.setCurrent(4, 15);
   await bench.load.inputOn();
   return { ...place, bench, told, world: place.simulation.world };
 }

@@ -24,8 +24,8 @@ export interface NurseryChange {
   readonly bench?: Partial<Bench>;
   readonly load?: Partial<Driver>;
   readonly meter?: Partial<Driver>;
-  /** What the meter answers to READ? whatever is at its probes. */
-  readonly meterReads?: string;
+  /** What the meter answers to READ? whatever is at its probes; it is told which reading it is, from 1. */
+  readonly meterReads?: string | ((count: number) => string);
   readonly onInput?: InputListener;
   readonly onNotice?: (text: string) => void;
 }
@@ -79,15 +79,16 @@ export async function nursery(change: NurseryChange = {}): Promise<Nursery> {
   };
 }
 
-/** A meter at the end of a line that gives one reading only. */
-function stubborn(clock: VirtualClock, reading: string): Connection {
+/** A meter at the end of a line that reads what it is told to. */
+function stubborn(clock: VirtualClock, reading: string | ((count: number) => string)): Connection {
+  let count = 0;
   const answers: Readonly<Record<string, string>> = {
     '*IDN?': 'NURSERY,METER,K,1',
     'SYST:ERR?': '0,"No error"',
-    'READ?': reading,
   };
   return new VirtualLine(clock, (message, at) => {
-    const answer = answers[message];
+    const read = (): string => (typeof reading === 'string' ? reading : reading((count += 1)));
+    const answer = message === 'READ?' ? read() : answers[message];
     return answer === undefined ? [] : [{ at: at + 0.02, bytes: Buffer.from(`${answer}\n`) }];
   });
 }

@@ -76,6 +76,13 @@ describe('before anything is switched on', () => {
     });
   });
 
+  it('the load looks where the bench file says so, whatever a meter beside it reads', async () => {
+    const { bench } = await opened({ bench: { voltageFrom: 'load-terminals' }, meterReads: '3.1' });
+    await expect(checkOpenCircuitVoltage(bench, 15)).resolves.toBeCloseTo(15.2, 1);
+    const blind = await opened({ bench: { voltageFrom: 'load-terminals' }, meterReads: '9.91E37' });
+    await expect(checkOpenCircuitVoltage(blind.bench, 15)).resolves.toBeCloseTo(15.2, 1);
+  });
+
   it('the load looks where there is no meter', async () => {
     const place = await nursery({ simulation: { faults: [{ at: 0, what: 'reversed' }] } });
     const { description, drivers } = place;

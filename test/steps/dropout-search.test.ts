@@ -1,9 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { simulatedOperator } from '../../src/cli/simulated-operator.js';
-import { trueValues } from '../../src/simulation/true-values.js';
-import { randomCase } from '../whole/random-case.js';
 import { exactInstruments } from '../bench/nursery-bench.js';
-import { type Stage, stage, type StageChange } from './one-step.js';
+import { stage, type StageChange } from './one-step.js';
+import { dropoutsOf, type Probe, probesOf } from './probes-of.js';
 
 const toTwice = { ceiling: '200 % of rated-current' };
 
@@ -15,24 +14,6 @@ const plain: StageChange = {
 const withOperator: Pick<StageChange, 'operator'> = {
   operator: ({ simulation }) => simulatedOperator(simulation),
 };
-
-interface Probe {
-  readonly phase: string;
-  readonly set: number | undefined;
-  readonly outcome: string;
-}
-
-function probesOf({ the }: Stage): readonly Probe[] {
-  const ended = the('point-ended');
-  return the('point-began').map(({ phase, set }, index) => ({
-    phase,
-    set: set.current,
-    outcome: ended[index]?.outcome ?? 'cut off',
-  }));
-}
-
-const dropoutsOf = (probes: readonly Probe[]): readonly Probe[] =>
-  probes.filter(({ outcome, phase }) => outcome === 'dropped' && phase !== 'recovery');
 
 describe('the search for the dropout', () => {
   it('ends with what held and what dropped no further apart than the resolution', async () => {
@@ -237,40 +218,5 @@ describe('the search for the dropout', () => {
     await expect(bench.perform('dropout-search', toTwice)).rejects.toThrow('stopped');
     expect(bench.the('recovery')).toHaveLength(1);
     expect(bench.the('point-began').at(-1)).toMatchObject({ phase: 'recovery' });
-  });
-});
-
-describe('over twenty modules of 4 A, for 10 mA', () => {
-  it('the search is within the resolution, with a median of at most 30 points and 6 dropouts', async () => {
-    const points: number[] = [];
-    const dropouts: number[] = [];
-    for (let seed = 1; seed <= 20; seed += 1) {
-      const { truth } = randomCase(seed);
-      const limit = { ...truth.limit, current: 4.2 + 0.175 * seed };
-      const bench = await stage({
-        ...withOperator,
-        limits: { current: 9, power: 190 },
-        module: { limit, noise: truth.noise, unsteadyAbove: 0.97 * limit.current },
-        simulation: { seed, instruments: exactInstruments },
-      });
-      await bench.perform('open-circuit', { for: '1 s' });
-      const before = probesOf(bench).length;
-      await bench.perform('dropout-search', toTwice);
-      const probes = probesOf(bench).slice(before);
-      points.push(probes.length);
-      dropouts.push(dropoutsOf(probes).length);
-      const [module] = bench.description.simulation?.modules ?? [];
-      if (module === undefined) throw new Error('there is no module');
-      const dropout = trueValues({ leads: 0 }, module).dropoutCurrent(0.05);
-      const found = bench.known['dropout-current'];
-      if (found === undefined) expect(dropout).toBeGreaterThan(7.9);
-      else expect(Math.abs(found - dropout)).toBeLessThanOrEqual(Math.max(0.01, 0.005 * dropout));
-    }
-    const medianOf = (values: number[]): number =>
-      values.sort((one, other) => one - other)[Math.floor(values.length / 2)] ?? Number.NaN;
-    expect(medianOf(points)).toBeLessThanOrEqual(30);
-    expect(medianOf(dropouts)).toBeLessThanOrEqual(6);
-    expect(points.at(-1)).toBeLessThanOrEqual(40);
-    expect(dropouts.at(-1)).toBeLessThanOrEqual(8);
   });
 });

@@ -18,12 +18,6 @@ describe('the load ramp', () => {
     expect(simulation.world.load).toMatchObject({ input: 'off', setCurrent: 0 });
   });
 
-  it('goes downwards when it is told to', async () => {
-    const { perform, the } = await stage();
-    await perform('load-ramp', { from: '2 A', to: '1 A', points: 3, readings: 2 });
-    expect(the('point-began').map(({ set }) => set.current)).toEqual([2, 1.5, 1]);
-  });
-
   it.each(['nursery', 'nursery-foldback', 'nursery-constant-current', 'nursery-latch-off'])(
     'ends where the module of the bench %s gives up, says so, and unloads it',
     async (file) => {
@@ -53,6 +47,29 @@ describe('the load ramp', () => {
     await perform('load-ramp', { to: '4 A', points: 9, readings: 2, sag: '5 %' });
     // 5 % of 15.21 V over 0.3 Ω is 2.5 A.
     expect(the('point-began').map(({ set }) => set.current)).toEqual([0, 0.5, 1, 1.5, 2, 2.5, 3]);
+  });
+
+  it('asks the load for no more power than the bench allows at the voltage that was measured', async () => {
+    const { perform, the, simulation } = await stage({
+      limits: { power: 60 },
+      known: { 'open-circuit-voltage': 15.21, 'dropout-current': 5.3 },
+    });
+    await expect(
+      perform('load-ramp', { from: '2 A', to: '80 % of dropout-current', points: 5, readings: 2 }),
+    ).rejects.toMatchObject({
+      code: 'BEYOND_CEILING',
+      message: '4.240 A at 15.21 V, which is 64.49 W, was asked for and the bench allows 60 W',
+    });
+    expect(simulation.world.load.setCurrent).toBeCloseTo(3.68, 9);
+    expect(the('point-ended').map(({ outcome }) => outcome)).toEqual(['held', 'held', 'held', 'held']);
+  });
+
+  it('ends exactly at its last current, so that rounding carries it over no limit', async () => {
+    for (const to of [4.7, 5.1, 3.3]) {
+      const { perform, the } = await stage({ limits: { current: to } });
+      await perform('load-ramp', { from: '0.1 A', to: `${to} A`, points: 8, dwell: '0 s', readings: 2 });
+      expect(the('point-began').at(-1)?.set.current).toBe(to);
+    }
   });
 
   it('asks the load for no more than the bench allows, and stops the run at that', async () => {

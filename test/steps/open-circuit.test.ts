@@ -30,19 +30,22 @@ describe('the open-circuit step', () => {
 
   it('switches off a load that was left on', async () => {
     const { perform, bench, simulation, the } = await stage();
-    await bench.load.setCurrent(1);
+    await bench.load.setCurrent(1, 15);
     await bench.load.inputOn();
     await perform('open-circuit', { for: '1 s' });
     expect(simulation.world.load.input).toBe('off');
     expect(the('input').map(({ state }) => state)).toEqual(['on', 'off']);
   });
 
-  it('knows no voltage where the meter never gave a value, and says so in the record', async () => {
+  it('stops the run where the meter gives no value three times in a row, each of them in the record', async () => {
     // SCPI-99: 9.91E37 is not a number.
     const { perform, known, the } = await stage({ meterReads: '9.91E37' });
-    await perform('open-circuit', { for: '1 s' });
+    await expect(perform('open-circuit', { for: '1 s' })).rejects.toMatchObject({
+      code: 'GUARD_TRIPPED',
+      guard: 'no-reading',
+    });
     const readings = the('reading').filter(({ of }) => of === 'meter');
-    expect(readings.length).toBeGreaterThan(0);
+    expect(readings).toHaveLength(3);
     expect(readings.every(({ value, problem }) => value === null && problem === 'not-a-number')).toBe(true);
     expect(known).not.toHaveProperty('open-circuit-voltage');
   });

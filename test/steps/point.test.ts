@@ -65,6 +65,32 @@ describe('a point', () => {
     expect(the('reading').at(0)).toMatchObject({ of: 'meter', value: null, problem: 'overload' });
   });
 
+  it('is not taken for a dropout where one reading gave no value, and is read until one does', async () => {
+    // SCPI-99: 9.91E37 is not a number.
+    const { perform, the } = await stage({
+      meterReads: (count) => (count === 1 || count === 3 ? '9.91E37' : '15.2'),
+    });
+    await perform('load-ramp', twoPoints);
+    expect(the('point-ended').map(({ outcome }) => outcome)).toEqual(['held', 'held']);
+    const samples = the('reading').filter(({ what, point }) => what === 'current' && point === 1);
+    expect(samples.map(({ sample }) => sample)).toEqual([1, 2, 3, 4]);
+  });
+
+  it.each(['load-ramp', 'dropout-search'])(
+    'stops the run, and drops nothing, where a %s sees nothing any more',
+    async (step) => {
+      const { perform, the } = await stage({ meterReads: (count) => (count > 8 ? '9.91E37' : '15.2') });
+      const parameters = step === 'load-ramp' ? { ...twoPoints, points: 20 } : { ceiling: '5 A' };
+      await expect(perform(step, parameters)).rejects.toMatchObject({
+        code: 'GUARD_TRIPPED',
+        guard: 'no-reading',
+        message: '3 times in a row the voltage could not be read',
+      });
+      expect(the('point-ended').map(({ outcome }) => outcome)).not.toContain('dropped');
+      expect(the('reading').filter(({ of }) => of === 'meter')).toHaveLength(11);
+    },
+  );
+
   it('shows whoever watches what was set and what flows', async () => {
     const { perform, shown } = await stage();
     await perform('load-ramp', twoPoints);
