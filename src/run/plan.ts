@@ -5,7 +5,7 @@ import type { Driver } from '../files/driver.js';
 import type { Module } from '../files/module.js';
 import type { Procedure, ProcedureStep } from '../files/procedure.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { QuantityOrShare, ReferenceName, Seconds } from '../quantity/quantity.js';
+import type { QuantityOrShare, Ratio, ReferenceName, Seconds } from '../quantity/quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
 import type { Known, StepKind } from '../steps/step-kind.js';
 
@@ -48,8 +48,15 @@ export class PlanError extends RailproofError {
 }
 
 /**
- * Checks everything that can be known before an instrument is touched: that references are to something
- * measured earlier, that currents and powers fit the bench and the load, that the module fits the bench.
+ * Without load a module gives a little more than its nameplate, so its power is reckoned with that much
+ * more. Once its voltage is measured the load itself refuses what comes to too much.
+ */
+const aboveNameplate: Ratio = 0.03;
+
+/**
+ * Checks everything that can be known before an instrument is touched: that there is one module, that
+ * references are to something measured earlier, that what shall rise does, that currents and powers fit the
+ * bench and the load, that the module fits the bench.
  * @throws PlanError with every problem found.
  */
 export function makePlan(
@@ -59,10 +66,15 @@ export function makePlan(
   drivers: PlanDrivers,
   stepKinds: readonly StepKind[],
 ): Plan {
-  const module = modules[0];
+  const [module, ...others] = modules;
   const ceilings = ceilingsOf(bench, drivers);
   const known: Known = { 'rated-voltage': module.rated.voltage, 'rated-current': module.rated.current };
   const problems: string[] = [];
+  if (others.length > 0) {
+    const names = others.map(({ name }) => name).join(', ');
+    const were = others.length === 1 ? 'was' : 'were';
+    problems.push(`the procedure tests one module, ${module.name}; ${names} ${were} given too`);
+  }
   if (module.rated.voltage > ceilings.voltage.value) {
     problems.push(
       `${module.name} is rated ${formatQuantity(module.rated.voltage, 'voltage')} and ` +
@@ -98,10 +110,34 @@ function problemsOf(
     if (missing !== undefined) {
       problems.push(`${where}: refers to ${missing}, which no step before this one measures`);
     } else if (kind.currents.includes(name) && isKnown(quantity, known)) {
-      problems.push(...beyond(where, resolve(quantity, known), known['rated-voltage'] ?? 0, ceilings));
+      problems.push(...beyond(where, quantity, known, ceilings));
     }
   }
-  return problems;
+  return [...problems, ...fallen(step, kind, known)];
+}
+
+/** What was asked for begins where it should end. */
+function fallen(step: ProcedureStep, kind: StepKind, known: Known): string[] {
+  const { rises } = kind;
+  if (rises === undefined) return [];
+  const quantities = kind.references(step.parameters);
+  const from = quantities[rises.from];
+  const to = quantities[rises.to];
+  if (from === undefined || to === undefined || !isKnown(from, known) || !isKnown(to, known)) return [];
+  const [first, last] = [resolve(from, known), resolve(to, known)];
+  if (first < last || (first === last && rises.mayBeLevel)) return [];
+  const than = first === last ? 'the same as' : 'above';
+  const wanted = rises.mayBeLevel ? 'no higher' : 'lower';
+  return [
+    `${step.place}: ${step.kind}.${rises.from}: ${asked(from, known)} is ${than} ${rises.to}, ` +
+      `${asked(to, known)}; it must be ${wanted}`,
+  ];
+}
+
+/** What the file says in full; what a share comes to, to four digits. */
+function asked(quantity: QuantityOrShare, known: Known): string {
+  const amps = resolve(quantity, known);
+  return formatQuantity(quantity.kind === 'absolute' ? amps : Number(amps.toPrecision(4)), 'current');
 }
 
 function notMeasured(quantity: QuantityOrShare, measured: ReadonlySet<string>): ReferenceName | undefined {
@@ -112,19 +148,23 @@ function isKnown(quantity: QuantityOrShare, known: Known): boolean {
   return quantity.kind === 'absolute' || known[quantity.of] !== undefined;
 }
 
-function beyond(where: string, amps: number, volts: number, ceilings: Ceilings): string[] {
+function beyond(where: string, quantity: QuantityOrShare, known: Known, ceilings: Ceilings): string[] {
   const { current, power } = ceilings;
-  if (amps < 0) return [`${where}: ${formatQuantity(amps, 'current')} is below zero`];
+  const amps = resolve(quantity, known);
+  const wanted = asked(quantity, known);
+  if (amps < 0) return [`${where}: ${wanted} is below zero`];
   if (amps > current.value) {
     const allowed = formatQuantity(current.value, 'current');
-    return [`${where}: ${formatQuantity(amps, 'current')} is more than ${current.setBy} allows (${allowed})`];
+    return [`${where}: ${wanted} is more than ${current.setBy} allows (${allowed})`];
   }
-  if (amps * volts > power.value) {
-    const wanted = formatQuantity(amps * volts, 'power');
+  const rated = known['rated-voltage'] ?? 0;
+  const watts = amps * rated * (1 + aboveNameplate);
+  if (watts > power.value) {
+    const taken = formatQuantity(watts, 'power', { significant: 4 });
     const allowed = formatQuantity(power.value, 'power');
     return [
-      `${where}: ${formatQuantity(amps, 'current')} at ${formatQuantity(volts, 'voltage')} is ${wanted}, ` +
-        `more than ${power.setBy} allows (${allowed})`,
+      `${where}: ${wanted} at ${formatQuantity(rated, 'voltage')} and ${formatQuantity(aboveNameplate, 'ratio')} ` +
+        `is ${taken}, more than ${power.setBy} allows (${allowed})`,
     ];
   }
   return [];

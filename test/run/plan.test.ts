@@ -5,10 +5,11 @@ import { nursery, type NurseryChange } from '../bench/nursery-bench.js';
 import { k1 } from '../steps/one-step.js';
 import { procedureOf } from './rehearsal.js';
 
-async function planOf(
-  steps: readonly string[],
-  change: NurseryChange & { readonly rated?: { readonly voltage: number; readonly current: number } } = {},
-): Promise<Plan> {
+interface PlanChange extends NurseryChange {
+  readonly rated?: { readonly voltage: number; readonly current: number };
+}
+
+async function planOf(steps: readonly string[], change: PlanChange = {}): Promise<Plan> {
   const { description, drivers } = await nursery(change);
   const module = { ...k1, rated: change.rated ?? k1.rated };
   return makePlan(procedureOf(steps), [module], description, drivers, stepKinds);
@@ -36,13 +37,38 @@ describe('a plan', () => {
     ).resolves.toBeDefined();
   });
 
+  it('may stay at one current', async () => {
+    await expect(planOf(['load-ramp: { from: 2 A, to: 2 A }'])).resolves.toBeDefined();
+  });
+
+  it('is for one module: others are refused by name, and other names in the simulation are not', async () => {
+    const { description, drivers } = await nursery({ module: { name: 'brick' } });
+    const plan = (...others: string[]): Plan =>
+      makePlan(
+        procedureOf(['open-circuit: { for: 1 s }']),
+        [k1, ...others.map((name) => ({ ...k1, name }))],
+        description,
+        drivers,
+        stepKinds,
+      );
+    expect(plan().module.name).toBe('K1');
+    expect(() => plan('K2')).toThrow('the procedure tests one module, K1; K2 was given too');
+    expect(() => plan('K2', 'K3')).toThrow(
+      expect.objectContaining({
+        code: 'PLAN',
+        exitCode: 65,
+        message: 'the procedure tests one module, K1; K2, K3 were given too',
+      }),
+    );
+  });
+
   it('may go right up to what the bench allows', async () => {
     await expect(planOf(['load-ramp: { to: 8 A }'])).resolves.toBeDefined();
   });
 });
 
 describe('a plan is refused, at file, line and column, when', () => {
-  it.each<[string, readonly string[], NurseryChange, string]>([
+  it.each<[string, readonly string[], PlanChange, string]>([
     [
       'it refers to something that no step before measures',
       ['load-ramp: { to: 80 % of dropout-current }', 'dropout-search: { ceiling: 8 A }'],
@@ -59,13 +85,43 @@ describe('a plan is refused, at file, line and column, when', () => {
       'a share comes to more than the load is rated for',
       ['dropout-search: { ceiling: 200 % of rated-current }'],
       { load: { ratings: { current: 6 } } },
-      "rehearsal.yaml:7:5: dropout-search.ceiling: 8 A is more than the load's rating allows (6 A)",
+      "rehearsal.yaml:7:5: dropout-search.ceiling: 8 A is more than the load's rating less 5 % allows (5.7 A)",
     ],
     [
       'it comes to more power than the load is rated for',
       ['load-ramp: { to: 8 A }'],
       { load: { ratings: { power: 100 } } },
-      "rehearsal.yaml:7:5: load-ramp.to: 8 A at 15 V is 120 W, more than the load's rating allows (100 W)",
+      "rehearsal.yaml:7:5: load-ramp.to: 8 A at 15 V and 3 % is 123.6 W, more than the load's rating allows (100 W)",
+    ],
+    [
+      'a share comes to a crooked number of amperes',
+      ['load-ramp: { to: 240 % of rated-current }'],
+      { rated: { voltage: 15, current: 3.7 } },
+      'rehearsal.yaml:7:5: load-ramp.to: 8.88 A is more than the bench allows (8 A)',
+    ],
+    [
+      'it comes to the power that the bench allows, which the module passes as it gives a little more',
+      ['load-ramp: { to: 4 A }'],
+      { limits: { power: 60 } },
+      'rehearsal.yaml:7:5: load-ramp.to: 4 A at 15 V and 3 % is 61.80 W, more than the bench allows (60 W)',
+    ],
+    [
+      'a search begins above its ceiling',
+      ['dropout-search: { from: 5 A, ceiling: 100 % of rated-current }'],
+      {},
+      'rehearsal.yaml:7:5: dropout-search.from: 5 A is above ceiling, 4 A; it must be lower',
+    ],
+    [
+      'a search begins at its ceiling',
+      ['dropout-search: { ceiling: 100 % of rated-current }'],
+      {},
+      'rehearsal.yaml:7:5: dropout-search.from: 4 A is the same as ceiling, 4 A; it must be lower',
+    ],
+    [
+      'a ramp falls',
+      ['load-ramp: { from: 2 A, to: 1 A }'],
+      {},
+      'rehearsal.yaml:7:5: load-ramp.from: 2 A is above to, 1 A; it must be no higher',
     ],
     [
       'the module itself is beyond the bench',
