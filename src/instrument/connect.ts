@@ -1,6 +1,6 @@
 import type { ConnectionAddress } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
-import { addressText } from './address-text.js';
+import { formatAddress } from '../files/connection-address.js';
 import { InstrumentUnreachableError } from './connection-errors.js';
 import type { Connection } from './connection.js';
 
@@ -28,7 +28,7 @@ export function connectorFor(connectors: Connectors): Connect {
     const connect = connectors[address.kind] as Connect | undefined;
     if (connect === undefined) {
       throw new InstrumentUnreachableError({
-        address: addressText(address),
+        address: formatAddress(address),
         reason: `there is no way to connect to a ${address.kind} address here`,
         advice: `Use one of these: ${Object.keys(connectors).join(', ')}.`,
       });

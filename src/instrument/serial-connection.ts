@@ -1,10 +1,10 @@
 import type { SerialPort } from 'serialport';
 import type { ConnectionAddress } from '../files/bench.js';
+import { formatAddress } from '../files/connection-address.js';
 import type { Seconds } from '../quantity/quantity.js';
-import { addressText } from './address-text.js';
-import { ConnectionLostError, InstrumentUnreachableError, PortBusyError } from './connection-errors.js';
+import { InstrumentUnreachableError, PortBusyError } from './connection-errors.js';
 import type { Connection } from './connection.js';
-import { Incoming } from './incoming.js';
+import { type OpenPort, PortConnection } from './port-connection.js';
 
 export type SerialAddress = Extract<ConnectionAddress, { kind: 'serial' }>;
 
@@ -22,7 +22,7 @@ export async function openSerial(
   address: SerialAddress,
   patience: SerialPatience = { writing: 5 },
 ): Promise<Connection> {
-  const name = addressText(address);
+  const name = formatAddress(address);
   const { SerialPort } = await import('serialport').catch((cause: unknown) => {
     throw new InstrumentUnreachableError({
       address: name,
@@ -47,66 +47,25 @@ export async function openSerial(
     });
     port.open((error) => {
       if (error) reject(whyNot(error, name, address.path));
-      else resolve(new SerialConnection(name, port, patience.writing));
+      else resolve(new PortConnection({ address: name, writing: patience.writing, ...portOf(port) }));
     });
   });
 }
 
-class SerialConnection implements Connection {
-  readonly address: string;
-  readonly #port: SerialPort;
-  readonly #writing: Seconds;
-  readonly #incoming: Incoming;
-
-  constructor(address: string, port: SerialPort, writing: Seconds) {
-    this.address = address;
-    this.#port = port;
-    this.#writing = writing;
-    this.#incoming = new Incoming(port);
-    port.on('data', (bytes: Uint8Array) => {
-      this.#incoming.arrive(bytes);
-    });
-    port.on('error', (error: Error) => {
-      this.#lost(error.message, error);
-    });
-    port.on('close', (error: Error | null | undefined) => {
-      this.#lost('the port is gone', error ?? undefined);
-    });
-  }
-
-  write(bytes: Uint8Array): Promise<void> {
-    if (this.#incoming.ended !== undefined) return Promise.reject(this.#incoming.ended);
-    return new Promise((resolve, reject) => {
-      const timer = setTimeout(() => {
-        reject(this.#lost(`it took nothing of what was sent for ${this.#writing} s`));
-      }, this.#writing * 1000);
-      this.#port.write(bytes, (error) => {
-        clearTimeout(timer);
-        if (error) reject(this.#lost(error.message, error));
-        else resolve();
-      });
-    });
-  }
-
-  receive(within: Seconds): Promise<Uint8Array | undefined> {
-    return this.#incoming.take(within);
-  }
-
-  close(): Promise<void> {
-    this.#lost('it was closed here');
-    if (!this.#port.isOpen) return Promise.resolve();
-    return new Promise((resolve) => {
-      this.#port.close(() => {
-        resolve();
-      });
-    });
-  }
-
-  #lost(reason: string, cause?: unknown): ConnectionLostError {
-    const error = new ConnectionLostError({ address: this.address, reason, cause });
-    this.#incoming.end(error);
-    return error;
-  }
+/** What is under way is still sent by the system, so there is nothing to cut when closing takes its time. */
+function portOf(port: SerialPort): Pick<OpenPort, 'stream' | 'gone' | 'hangUp' | 'cut'> {
+  return {
+    stream: port,
+    gone: 'the port is gone',
+    hangUp: (done) => {
+      if (!port.isOpen) {
+        done();
+        return;
+      }
+      port.close(done);
+    },
+    cut: () => undefined,
+  };
 }
 
 /** The package gives no codes, only the operating system's words. */

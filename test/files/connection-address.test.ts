@@ -72,7 +72,12 @@ it('the forms we advise are all good addresses', () => {
 it.each<[string, string]>([
   ['serial:/dev/ttyUSB0', 'serial:/dev/ttyUSB0?baud=9600'],
   ['serial:/dev/ttyUSB0?stop=2&parity=odd', 'serial:/dev/ttyUSB0?baud=9600&parity=odd&stop=2'],
+  [
+    'serial:/dev/ttyUSB0?flow=hardware&stop=2&parity=even&data=7',
+    'serial:/dev/ttyUSB0?baud=9600&data=7&parity=even&stop=2&flow=hardware',
+  ],
   ['tcp://[::1]:5025', 'tcp://[::1]:5025'],
+  ['simulated:', 'simulated:'],
 ])('%s is written without what is the default', (text, written) => {
   expect(formatAddress(parseAddress(text))).toBe(written);
 });
