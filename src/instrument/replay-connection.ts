@@ -1,8 +1,8 @@
 import { open, type FileHandle } from 'node:fs/promises';
 import type { Clock } from '../clock/clock.js';
 import type { ConnectionAddress } from '../files/bench.js';
+import { formatAddress } from '../files/connection-address.js';
 import type { Seconds } from '../quantity/quantity.js';
-import { addressText } from './address-text.js';
 import type { Connection } from './connection.js';
 import { readDialogueHeader, readDialogueLine, type TraceEntry } from './dialogue-record.js';
 import { DialogueFileError, ReplayMismatchError } from './replay-errors.js';
@@ -39,7 +39,7 @@ export async function openReplay(address: ReplayAddress, clock: Clock): Promise<
     if (first === undefined || readDialogueHeader(first) === undefined) {
       throw new DialogueFileError({ file, line: 1, reason: 'not a recorded dialogue' });
     }
-    return new ReplayConnection(addressText(address), file, handle, lines, clock);
+    return new ReplayConnection(formatAddress(address), file, handle, lines, clock);
   } catch (error) {
     await handle.close().catch(() => undefined);
     throw error;
@@ -122,9 +122,12 @@ class ReplayConnection implements Connection {
   }
 
   async #read(): Promise<TraceEntry | 'end'> {
-    this.#lineNumber++;
-    const line = await nextLine(this.#lines, this.#file, this.#lineNumber);
-    if (line === undefined || line === '') return 'end';
+    let line: string | undefined;
+    do {
+      this.#lineNumber++;
+      line = await nextLine(this.#lines, this.#file, this.#lineNumber);
+    } while (line?.trim() === '');
+    if (line === undefined) return 'end';
     const entry = readDialogueLine(line);
     if (entry === undefined) {
       throw new DialogueFileError({

@@ -33,7 +33,8 @@ export class DialogueFileError extends RailproofError {
 
   constructor(facts: { file: string; line?: number; reason: string; missing?: boolean; cause?: unknown }) {
     super(`${facts.file}${facts.line === undefined ? '' : `:${facts.line}`}: ${facts.reason}`, {
-      advice: 'A recorded dialogue begins with {"format":"railproof/dialogue 1", …}; make one with --trace.',
+      advice:
+        'A recorded dialogue begins with {"format":"railproof/dialogue 1","address":"…"}; each further line is {"t":0.1,"sent":"…"} or {"t":0.2,"received":"…"}.',
       cause: facts.cause,
     });
     this.exitCode = facts.missing === true ? exitCodes.missingFile : exitCodes.badFile;

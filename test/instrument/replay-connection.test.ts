@@ -67,6 +67,16 @@ describe('a replayed dialogue', () => {
     await connection.close();
   });
 
+  it('goes on after a blank line, and counts it', async () => {
+    const file = await fileOf(`${header}\n{"t":0,"sent":"*IDN?\\n"}\n \n\n{"t":0,"sent":"INP?\\n"}\n`);
+    const connection = await replay(file);
+    await connection.write(bytes('*IDN?\n'));
+    await expect(connection.write(bytes('INP OFF\n'))).rejects.toMatchObject({
+      message: `${file}:6: the recording has "INP?\\n" sent, and now "INP OFF\\n" was sent`,
+    });
+    await connection.close();
+  });
+
   it('refuses to go on after its end', async () => {
     const file = await fileOf(header);
     const connection = await replay(file);
