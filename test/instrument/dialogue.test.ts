@@ -12,7 +12,8 @@ import * as talkers from './fixtures/talkers.js';
 const tcp = async (talker: talkers.Talker): Promise<Connection> => openTcp(await serveTcp(talker));
 const serial = async (talker: talkers.Talker): Promise<Connection> => openSerial(await servePty(talker));
 
-const timeout = 0.12;
+/** A busy machine must answer within it; `dialogue-pairing.test.ts` looks at times more closely, on virtual time. */
+const timeout = 0.3;
 
 describe.each([
   { line: 'TCP', connect: tcp, missing: false },
@@ -74,7 +75,7 @@ describe.each([
       exitCode: 69,
     });
     expect(realClock.now() - began).toBeGreaterThan(timeout * 0.9);
-    expect(realClock.now() - began).toBeLessThan(timeout * 5);
+    expect(realClock.now() - began).toBeLessThan(timeout * 30);
   });
 
   it.skipIf(missing)('gives up on getting in step with an instrument that stays silent', async () => {
