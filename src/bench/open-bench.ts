@@ -1,11 +1,12 @@
 import type { Clock } from '../clock/clock.js';
 import type { Bench } from '../files/bench.js';
-import type { Driver, Role } from '../files/driver.js';
+import type { Driver } from '../files/driver.js';
 import type { Connect } from '../instrument/connect.js';
-import { Instrument } from '../instrument/instrument.js';
+import { Instrument, type InstrumentParts } from '../instrument/instrument.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { Audience } from './audience.js';
 import { type Ceilings, ceilingsOf } from './ceilings.js';
+import { sayWhatIsOn } from './found-on.js';
 import { type InputListener, Load } from './load.js';
 import type { Taken } from './sample.js';
 
@@ -16,6 +17,8 @@ export interface BenchParts {
   readonly clock: Clock;
   readonly onInput: InputListener;
   readonly onNotice: (text: string) => void;
+  /** `make-safe` tells the load what makes it safe before anything is asked of it. */
+  readonly first?: InstrumentParts['first'];
 }
 
 /** The instruments of one bench, opened together. */
@@ -28,7 +31,10 @@ export interface OpenBench {
   readonly instruments: readonly Instrument[];
   /** Reads everything there is to read at one moment; `each` is told of every value as it comes. */
   sample(each: (taken: Taken) => void): Promise<readonly Taken[]>;
-  /** Closes the load's connection and, after a pause, opens it again; hands over a load that answers. */
+  /**
+   * Closes the load's connection and, after a pause, opens it again to make it safe: what makes it safe is
+   * told before anything is asked. Hands over a load that answers.
+   */
   reopenLoad(pause: Seconds): Promise<Load>;
   /** Does something that no listener can stop: a journal on a full disk must not keep the load on. */
   regardless<T>(work: () => Promise<T>): Promise<T>;
@@ -39,17 +45,19 @@ export interface OpenBench {
 /**
  * Opens the instruments of a bench; those already open are closed again when one of them fails.
  * Nothing is switched on.
+ * @throws FoundOnError when another instrument fails and the load is on, though nobody here switched it on
  */
 export async function openBench(parts: BenchParts): Promise<OpenBench> {
   const audience = new Audience(parts.onInput, parts.onNotice);
-  const load = await openInstrument(parts, audience, 'load', parts.drivers.load);
+  const load = await openInstrument(parts, audience, 'load', parts.drivers.load, parts.first);
   try {
     const meter =
       parts.drivers.meter && (await openInstrument(parts, audience, 'meter', parts.drivers.meter));
     return assemble(parts, audience, load, meter);
   } catch (error) {
+    const told = await sayWhatIsOn(load, error);
     await load.close();
-    throw error;
+    throw told;
   }
 }
 
@@ -89,7 +97,7 @@ function assemble(
       await load.instrument.close();
       await parts.clock.sleep(pause);
       load = new Load(
-        await openInstrument(parts, audience, 'load', parts.drivers.load),
+        await openInstrument(parts, audience, 'load', parts.drivers.load, 'make-safe'),
         ceilings,
         audience.input,
       );
@@ -109,12 +117,13 @@ function assemble(
 async function openInstrument(
   { bench, connect, clock }: BenchParts,
   { notice }: Audience,
-  role: Role,
+  role: keyof Bench['instruments'],
   driver: Driver,
+  first: InstrumentParts['first'] = 'identity',
 ): Promise<Instrument> {
   const place = bench.instruments[role];
   if (place === undefined) throw new Error(`the bench has no ${role}`);
   const connection = await connect(place.connection, driver, role);
   // When this fails it has closed the connection.
-  return Instrument.open({ role, driver, connection, clock, onNotice: notice });
+  return Instrument.open({ role, driver, connection, clock, onNotice: notice, first });
 }

@@ -8,6 +8,7 @@ import { isIdentityFor } from './identity.js';
 import { InstrumentComplainedError, NotInDriverError, WrongInstrumentError } from './instrument-errors.js';
 import { noticeText, type Notice, type OnNotice } from './notice.js';
 import { fillMessage, type OperationValues } from './message.js';
+import { tellMakeSafe } from './make-safe.js';
 import { readFlag, readNumber, type About } from './reading.js';
 import type { ScpiError } from './scpi-error.js';
 import type { Measurement } from './scpi-number.js';
@@ -21,6 +22,11 @@ export interface InstrumentParts {
   /** For the journal: late replies, bytes nobody asked for, errors from before. */
   readonly onNotice?: OnNotice;
   readonly trace?: Trace;
+  /**
+   * `make-safe` tells what makes it safe before anything is asked, so that no silence and no complaint comes
+   * before it. How it complains is then no reason not to open it.
+   */
+  readonly first?: 'identity' | 'make-safe';
 }
 
 /** One instrument of the bench, spoken to as its driver says. One act at a time; others wait their turn. */
@@ -41,47 +47,29 @@ export class Instrument {
 
   /**
    * Finds out who is there, empties the error queue of what is in it from before, and sends the driver's
-   * `prepare`. Nothing is switched. When it fails the connection is closed.
+   * `prepare`. Nothing is switched on. When it fails the connection is closed.
    * @throws WrongInstrumentError when what answers is not what the driver is for
    * @throws InstrumentComplainedError when the error queue does not get clear, or `prepare` is refused
    * @throws InstrumentSilentError, ReplyNotUnderstoodError, ConnectionLostError and the rest of the dialogue's
    */
-  static async open({
-    role,
-    driver,
-    connection,
-    clock,
-    onNotice,
-    trace,
-  }: InstrumentParts): Promise<Instrument> {
-    const isIdentity = isIdentityFor(driver);
+  static async open(parts: InstrumentParts): Promise<Instrument> {
+    const { role, driver, connection, clock, onNotice, trace, first = 'identity' } = parts;
     const dialogue = new Dialogue({
       connection,
       wire: driver.wire,
       clock,
       identify: driver.identify,
-      isIdentity,
+      isIdentity: isIdentityFor(driver),
       ...(onNotice && { onNotice }),
       ...(trace && { trace }),
     });
     try {
-      let identity = await dialogue.ask(driver.identify);
-      if (!isIdentity(identity)) {
-        // It may be the late answer to something that an earlier program asked.
-        dialogue.doubt();
-        identity = await dialogue.ask(driver.identify).catch(() => identity);
-      }
-      if (!isIdentity(identity)) {
-        throw new WrongInstrumentError({ address: connection.address, role, driver: driver.name, identity });
-      }
-      const instrument = new Instrument(role, driver, identity.trim(), dialogue);
-      const stale = await readErrorQueue(dialogue, driver.errors);
-      for (const entry of stale.entries) {
-        const notice: Notice = { kind: 'stale-error', entry };
-        onNotice?.(noticeText(connection.address, notice), notice);
-      }
-      if (!stale.clear) throw instrument.#complaint(stale.entries, []);
-      await instrument.#send(driver.prepare);
+      if (first === 'make-safe') await tellMakeSafe(dialogue, driver);
+      const identity = await identityOf(dialogue, driver, role);
+      const instrument = new Instrument(role, driver, identity, dialogue);
+      const prepared = instrument.#prepare(onNotice);
+      // Whether it is safe is read from it later, whatever it says of how it was prepared.
+      await (first === 'make-safe' ? prepared.catch(() => undefined) : prepared);
       return instrument;
     } catch (error) {
       await dialogue.close();
@@ -144,6 +132,16 @@ export class Instrument {
     return this.#dialogue.close();
   }
 
+  async #prepare(onNotice: OnNotice | undefined): Promise<void> {
+    const stale = await readErrorQueue(this.#dialogue, this.driver.errors);
+    for (const entry of stale.entries) {
+      const notice: Notice = { kind: 'stale-error', entry };
+      onNotice?.(noticeText(this.address, notice), notice);
+    }
+    if (!stale.clear) throw this.#complaint(stale.entries, []);
+    await this.#send(this.driver.prepare);
+  }
+
   async #send(messages: readonly string[]): Promise<void> {
     for (const message of messages) await this.#dialogue.tell(message);
     if (messages.length === 0) return;
@@ -180,4 +178,16 @@ export class Instrument {
   #complaint(entries: readonly ScpiError[], after: readonly string[]): InstrumentComplainedError {
     return new InstrumentComplainedError({ address: this.address, entries, after });
   }
+}
+
+async function identityOf(dialogue: Dialogue, driver: Driver, role: Role): Promise<string> {
+  const isIdentity = isIdentityFor(driver);
+  let identity = await dialogue.ask(driver.identify);
+  if (!isIdentity(identity)) {
+    // It may be the late answer to something that an earlier program asked.
+    dialogue.doubt();
+    identity = await dialogue.ask(driver.identify).catch(() => identity);
+  }
+  if (isIdentity(identity)) return identity.trim();
+  throw new WrongInstrumentError({ address: dialogue.address, role, driver: driver.name, identity });
 }

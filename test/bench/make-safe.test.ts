@@ -1,6 +1,10 @@
 import { describe, expect, it } from 'vitest';
-import { makeSafe } from '../../src/bench/make-safe.js';
+import { makeSafe, makeSafeUnopened } from '../../src/bench/make-safe.js';
+import { openBench } from '../../src/bench/open-bench.js';
+import { VirtualClock } from '../../src/clock/virtual-clock.js';
 import type { InputState } from '../../src/bench/load.js';
+import { toyDriver, toyLoad } from '../instrument/fixtures/toy-load.js';
+import { VirtualLine } from '../instrument/fixtures/virtual-line.js';
 import { nursery, type NurseryChange } from './nursery-bench.js';
 
 const fromDriver = (await nursery()).drivers.load;
@@ -65,6 +69,62 @@ describe('a bench is made safe', () => {
     expect(world.load.input).toBe('off');
     // Otherwise what can't be recorded is not done.
     await expect(bench.load.inputOn()).rejects.toThrow('the disk is full');
+  });
+});
+
+describe('on a line that is new a load is told to be safe before it is asked anything', () => {
+  /** A load at the end of lines that keep what was sent; what it answers may change. */
+  async function listening(answers: Record<string, string | undefined>) {
+    const toy = toyLoad({ replies: answers });
+    const clock = new VirtualClock(new Date(0));
+    const lines: VirtualLine[] = [];
+    const parts = {
+      bench: (await nursery()).description,
+      drivers: { load: toyDriver },
+      clock,
+      connect: () => {
+        const line = new VirtualLine(clock, toy.react);
+        lines.push(line);
+        return Promise.resolve(line);
+      },
+    };
+    toy.state.input = '1';
+    return { parts, toy, lines };
+  }
+  const unheard = { onInput: () => undefined, onNotice: () => undefined };
+
+  it('when the open one is of no use any more', async () => {
+    const answers: Record<string, string | undefined> = {};
+    const { parts, toy, lines } = await listening(answers);
+    const bench = await openBench({ ...parts, ...unheard });
+    for (const question of ['*IDN?', 'SYST:ERR?', 'INP?']) answers[question] = undefined;
+    expect(await makeSafe(bench)).toMatchObject({ kind: 'unconfirmed' });
+    expect(lines.map(({ sent }) => sent.slice(0, 2))).toEqual([
+      ['*IDN?', 'SYST:ERR?'],
+      ['INP OFF', '*IDN?'],
+      ['INP OFF', '*IDN?'],
+    ]);
+    expect(toy.state.input).toBe('0');
+  });
+
+  it('when there was none', async () => {
+    const { parts, toy, lines } = await listening({});
+    expect(await makeSafeUnopened(parts)).toEqual({ safety: { kind: 'confirmed' }, address: 'virtual:' });
+    expect(toy.state.input).toBe('0');
+    expect(lines.map(({ sent }) => sent[0])).toEqual(['INP OFF']);
+  });
+
+  it('twice when there was none and it does not answer', async () => {
+    const { parts, lines } = await listening({ '*IDN?': undefined });
+    const { safety } = await makeSafeUnopened(parts);
+    expect(safety).toMatchObject({
+      kind: 'unconfirmed',
+      advice: expect.stringContaining('THE LOAD MAY STILL BE ON') as string,
+    });
+    expect(lines.map(({ sent }) => sent)).toEqual([
+      ['INP OFF', '*IDN?'],
+      ['INP OFF', '*IDN?'],
+    ]);
   });
 });
 

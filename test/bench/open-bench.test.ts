@@ -32,6 +32,24 @@ describe('a bench that is opened', () => {
     for (const line of lines) await expect(line.write(Buffer.from('*IDN?\n'))).rejects.toThrow(/closed/);
   });
 
+  it('says that the load is on when another instrument fails, and leaves it as it was found', async () => {
+    const { open, lines, simulation } = await nursery({
+      simulation: { faults: [{ at: 0, what: 'meter-silent' }] },
+    });
+    simulation.world.setLoad({ input: 'on', setCurrent: 4 }, 0);
+    await expect(open()).rejects.toMatchObject({
+      code: 'FOUND_ON',
+      exitCode: 69,
+      message: expect.stringMatching(
+        /did not answer.*; and the input of the load at simulated:standard-load is on$/,
+      ) as string,
+      advice: expect.stringContaining('`railproof safe` switches it off') as string,
+      cause: expect.objectContaining({ code: 'INSTRUMENT_SILENT' }) as Error,
+    });
+    expect(simulation.world.load.input).toBe('on');
+    for (const line of lines) await expect(line.write(Buffer.from('*IDN?\n'))).rejects.toThrow(/closed/);
+  });
+
   it('closes the only one it had opened when that is not what its driver is for', async () => {
     const { open, lines } = await nursery({ load: { identity: /^PUMP/ } });
     await expect(open()).rejects.toMatchObject({ code: 'WRONG_INSTRUMENT' });

@@ -6,7 +6,12 @@ import { toyDriver, toyLoad } from './fixtures/toy-load.js';
 import { VirtualLine } from './fixtures/virtual-line.js';
 
 async function opened(
-  options: { driver?: Partial<Driver>; replies?: Record<string, string | undefined>; stale?: string[] } = {},
+  options: {
+    driver?: Partial<Driver>;
+    replies?: Record<string, string | undefined>;
+    stale?: string[];
+    first?: 'make-safe';
+  } = {},
 ) {
   const load = toyLoad({ ...(options.replies && { replies: options.replies }) });
   load.queue.push(...(options.stale ?? []));
@@ -18,6 +23,7 @@ async function opened(
     connection: new VirtualLine(clock, load.react),
     clock,
     onNotice: (text) => notices.push(text),
+    ...(options.first && { first: options.first }),
   });
   return { instrument, load, clock, notices };
 }
@@ -60,6 +66,38 @@ describe('opening an instrument', () => {
   it('takes any name where the driver asks for none', async () => {
     const { instrument } = await opened({ replies: { '*IDN?': ' SHED,GREEN BOX,0,0 ' } });
     expect(instrument.identity).toBe('SHED,GREEN BOX,0,0');
+  });
+
+  it('tells what makes safe before anything is asked, where that is wanted first', async () => {
+    const { instrument, load } = await opened({ first: 'make-safe' });
+    expect(load.told).toEqual(['INP OFF', '*IDN?', 'SYST:ERR?', '*CLS', 'SYST:ERR?']);
+    expect(await instrument.flag('input-state')).toBe(false);
+  });
+
+  it.each([
+    ['whose error queue does not get clear', { replies: { 'SYST:ERR?': '-350,"Queue overflow"' } }],
+    ['whose error queue cannot be read', { replies: { 'SYST:ERR?': 'E5' } }],
+    ['that does not answer about errors', { replies: { 'SYST:ERR?': undefined } }],
+    ['that refuses what prepares it', { driver: { prepare: ['SENS:SOMETHING'] } }],
+  ])('to make it safe is no matter of complaints: one %s can still be asked', async (_, change) => {
+    const { instrument, load } = await opened({ ...change, first: 'make-safe' });
+    expect(load.told[0]).toBe('INP OFF');
+    expect(await instrument.flag('input-state')).toBe(false);
+  });
+
+  it('to make it safe has told it so also when nobody answers', async () => {
+    const load = toyLoad({ replies: { '*IDN?': undefined } });
+    const clock = new VirtualClock(new Date(0));
+    const connection = new VirtualLine(clock, load.react);
+    const opening = Instrument.open({
+      role: 'load',
+      driver: toyDriver,
+      connection,
+      clock,
+      first: 'make-safe',
+    });
+    await expect(opening).rejects.toMatchObject({ code: 'INSTRUMENT_SILENT' });
+    expect(load.told).toEqual(['INP OFF', '*IDN?']);
   });
 
   it('does not take the late answer to an earlier program for the identity', async () => {
@@ -163,13 +201,13 @@ describe('an instrument', () => {
     const { instrument } = await opened();
     expect([
       instrument.has('set-current'),
-      instrument.has('voltage-mode'),
+      instrument.has('protect-current'),
       instrument.has('toString'),
     ]).toEqual([true, false, false]);
     expect([instrument.reads('current'), instrument.reads('power')]).toEqual([true, false]);
-    await expect(instrument.perform('voltage-mode')).rejects.toMatchObject({
+    await expect(instrument.perform('protect-current')).rejects.toMatchObject({
       code: 'NOT_IN_DRIVER',
-      message: 'The driver toy-load has no operation "voltage-mode"',
+      message: 'The driver toy-load has no operation "protect-current"',
     });
     await expect(instrument.read('power')).rejects.toMatchObject({ code: 'NOT_IN_DRIVER', exitCode: 65 });
     await expect(instrument.flag('voltage')).rejects.toMatchObject({ code: 'NOT_IN_DRIVER' });

@@ -1,0 +1,11 @@
+import type { Driver } from '../files/driver.js';
+import type { Dialogue } from './dialogue.js';
+
+/**
+ * Tells an instrument what makes it safe, and asks it nothing: telling needs no step, so it can be done
+ * before it is known who is there, and to one that does not answer.
+ * @throws ConnectionLostError
+ */
+export async function tellMakeSafe(dialogue: Dialogue, driver: Driver): Promise<void> {
+  for (const message of driver.operations['make-safe'] ?? []) await dialogue.tell(message);
+}

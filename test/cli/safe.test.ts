@@ -1,0 +1,125 @@
+import { once } from 'node:events';
+import { rmSync } from 'node:fs';
+import { createServer, type AddressInfo } from 'node:net';
+import { dirname } from 'node:path';
+import { describe, expect, it } from 'vitest';
+import { benchFile, lastLine, loadAtSocket, railproof } from './at-a-socket.js';
+
+const mayBeOn =
+  'THE LOAD MAY STILL BE ON. Switch its input off at its front panel, or unplug the module, before you touch the leads.';
+
+describe('safe', () => {
+  it('tells the load to be off before it asks anything, and reads back that it is', async () => {
+    const load = await loadAtSocket();
+    const { status, stdout, stderr } = await railproof('safe', '--bench', load.bench);
+    expect(stdout).toBe(`The load at ${load.address} is off; it was read back.\n`);
+    expect(stderr).toBe('');
+    expect(status).toBe(0);
+    expect(load.heard[0]).toBe('INP OFF');
+    expect(load.state.input).toBe('0');
+  });
+
+  it('does so though the queue of errors never clears', async () => {
+    const load = await loadAtSocket((message) =>
+      message === 'SYST:ERR?' ? { answer: '-350,"Queue overflow"' } : undefined,
+    );
+    const { status, stdout } = await railproof('safe', '--bench', load.bench);
+    expect(load.heard[0]).toBe('INP OFF');
+    expect(load.state.input).toBe('0');
+    expect(stdout).toMatch(/is off; it was read back/);
+    expect(status).toBe(0);
+  });
+
+  it('does so though what prepares the load is refused', async () => {
+    const load = await loadAtSocket(undefined, (driver) => driver.replace('["*CLS"]', '["LAMP ON"]'));
+    const { status } = await railproof('safe', '--bench', load.bench);
+    expect(load.state.input).toBe('0');
+    expect(status).toBe(0);
+  });
+
+  it('comes back when the first connection is lost', async () => {
+    let calls = 0;
+    const load = await loadAtSocket((message) => {
+      calls += message === '*IDN?' ? 1 : 0;
+      return message === '*IDN?' && calls === 1 ? 'hang-up' : undefined;
+    });
+    const { status } = await railproof('safe', '--bench', load.bench);
+    expect(load.heard.slice(0, 4)).toEqual(['INP OFF', '*IDN?', 'INP OFF', '*IDN?']);
+    expect(status).toBe(0);
+  });
+});
+
+describe('safe that cannot be confirmed says as its last words what to do by hand, and ends with 69', () => {
+  it('of a load that is silent, which was told on each connection', async () => {
+    const load = await loadAtSocket((message) => (message.endsWith('?') ? 'ignore' : undefined));
+    const { status, stdout, stderr } = await railproof('safe', '--bench', load.bench);
+    expect(load.heard).toEqual(['INP OFF', '*IDN?', 'INP OFF', '*IDN?']);
+    expect(load.state.input).toBe('0');
+    expect(stderr).toMatch(/^It could not be confirmed that the load is off: .*did not answer/);
+    expect(lastLine(stderr)).toBe(mayBeOn);
+    expect(stdout).toBe('');
+    expect(status).toBe(69);
+  });
+
+  it('of a load that refuses', async () => {
+    const load = await loadAtSocket((message, { queue }) => {
+      if (message !== 'INP OFF') return undefined;
+      queue.push('-221,"Settings conflict"');
+      return 'ignore';
+    });
+    const { status, stderr } = await railproof('safe', '--bench', load.bench);
+    expect(load.state.input).toBe('1');
+    expect(load.heard.filter((message) => message === 'INP OFF')).toHaveLength(4);
+    expect(stderr).toContain('was made safe and says that its input is on');
+    expect(lastLine(stderr)).toBe(mayBeOn);
+    expect(status).toBe(69);
+  });
+
+  it('of a load that vanishes', async () => {
+    const load = await loadAtSocket((message) => (message.endsWith('?') ? 'hang-up' : undefined));
+    const { status, stderr } = await railproof('safe', '--bench', load.bench);
+    expect(load.heard.filter((message) => message === 'INP OFF')).toHaveLength(2);
+    expect(stderr).toContain('connection lost');
+    expect(lastLine(stderr)).toBe(mayBeOn);
+    expect(status).toBe(69);
+  });
+
+  it('of something else that answers, which was told all the same', async () => {
+    const load = await loadAtSocket(undefined, (driver) =>
+      driver.replace('errors:', 'identity: "^PUMP"\nerrors:'),
+    );
+    const { status, stderr } = await railproof('safe', '--bench', load.bench);
+    expect(load.heard[0]).toBe('INP OFF');
+    expect(lastLine(stderr)).toBe(mayBeOn);
+    expect(status).toBe(69);
+  });
+
+  it('of a load that cannot be reached', async () => {
+    const load = await loadAtSocket();
+    const { status, stderr } = await railproof(
+      'safe',
+      '--bench',
+      benchFile(dirname(load.bench), `tcp://127.0.0.1:${await freePort()}`),
+    );
+    expect(stderr).toContain('nothing listens on this port');
+    expect(lastLine(stderr)).toBe(mayBeOn);
+    expect(status).toBe(69);
+  });
+
+  it('and with the status of the file where that is what is wrong', async () => {
+    const load = await loadAtSocket();
+    rmSync(load.driver);
+    const { status, stderr } = await railproof('safe', '--bench', load.bench);
+    expect(lastLine(stderr)).toBe(mayBeOn);
+    expect(status).toBe(66);
+  });
+});
+
+async function freePort(): Promise<number> {
+  const server = createServer().listen(0, '127.0.0.1');
+  await once(server, 'listening');
+  const { port } = server.address() as AddressInfo;
+  server.close();
+  await once(server, 'close');
+  return port;
+}
