@@ -1,13 +1,17 @@
 import { readdir } from 'node:fs/promises';
 import { join } from 'node:path';
+import { loadMayStillBeOn } from '../bench/make-safe.js';
 import { realClock } from '../clock/real-clock.js';
-import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
+import { exitCodeOf, exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
 import { parseAddress } from '../files/connection-address.js';
+import type { Driver } from '../files/driver.js';
 import { readDriver } from '../files/read-driver.js';
 import { tryDriver, type TrialResult } from '../instrument/trial.js';
 import { visible } from '../instrument/visible.js';
 import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
+import { errorText } from './error-text.js';
+import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
 import { connectors, shipped } from './wiring.js';
 
@@ -59,25 +63,56 @@ async function tryOut(name: string, address: string, json: boolean, streams: Str
   const { value: driver } = await readDriver(name, { relativeTo: '.', shipped: shipped.drivers });
   const connection = await connectors(realClock)(parseAddress(address), driver, driver.role);
   const results: TrialResult[] = [];
+  const stop = stopOnSignals(streams);
+  let ending: Ending = { how: 'as-it-should' };
   try {
-    if (!json) streams.stderr.write(`${driver.name} at ${connection.address}; the input stays off\n`);
-    for await (const result of tryDriver({ driver, connection, clock: realClock })) {
+    if (!json) streams.stderr.write(`${driver.name} at ${connection.address}\n`);
+    for await (const result of tryDriver({ driver, connection, clock: realClock, signal: stop.signal })) {
       results.push(result);
       if (!json) streams.stdout.write(`${resultLine(result)}\n`);
     }
+    if (stop.signal.aborted) ending = { how: 'stopped', error: stop.signal.reason };
+  } catch (error) {
+    ending = { how: 'broken-off', error };
   } finally {
     await connection.close();
+    stop.release();
   }
-  const understood = results.filter((result) => result.verdict === 'understood').length;
-  const sent = results.filter((result) => result.verdict !== 'not-sent').length;
-  if (json) {
-    streams.stdout.write(jsonText({ format: 'railproof/trial 1', driver: driver.name, results }));
-  } else {
-    streams.stdout.write(`${understood} of ${sent} messages understood\n`);
+  streams.stdout.write(json ? trialAsJson(driver, results) : countLine(results));
+  return tell(driver, results, ending, streams);
+}
+
+type Ending =
+  { readonly how: 'as-it-should' } | { readonly how: 'stopped' | 'broken-off'; readonly error: unknown };
+
+/** The last words are how a load was left. */
+function tell(
+  driver: Driver,
+  results: readonly TrialResult[],
+  ending: Ending,
+  { stderr }: Streams,
+): ExitCode {
+  if (ending.how !== 'as-it-should') stderr.write(`${errorText(ending.error)}\n`);
+  const last = results.at(-1);
+  const off = ending.how !== 'broken-off' && last?.part === 'proof' && last.verdict === 'understood';
+  if (driver.role === 'load') {
+    stderr.write(off ? 'The load is off; it was read back.\n' : `${loadMayStillBeOn}\n`);
   }
+  if (ending.how !== 'as-it-should') return exitCodeOf(ending.error);
+  if (driver.role === 'load' && !off) return exitCodes.instrument;
   return results.some(({ verdict }) => verdict === 'refused' || verdict === 'silent')
     ? exitCodes.doesNotConform
     : exitCodes.conforms;
+}
+
+function trialAsJson({ name }: Driver, results: readonly TrialResult[]): string {
+  return jsonText({ format: 'railproof/trial 1', driver: name, results });
+}
+
+function countLine(results: readonly TrialResult[]): string {
+  const understood = results.filter(({ verdict }) => verdict === 'understood').length;
+  const sent = results.filter(({ verdict }) => verdict !== 'not-sent').length;
+  return `${understood} of ${sent} messages understood\n`;
 }
 
 const widthOfVerdict = 11;

@@ -26,6 +26,7 @@ describe('trying a driver', () => {
     const { brief, load } = await trialOf();
     expect(brief).toEqual([
       '*IDN?: understood NURSERY,LOAD,K1,1.0',
+      'INP?: understood 0',
       'SYST:ERR?: understood',
       '*CLS: understood',
       'INP OFF: understood',
@@ -33,15 +34,19 @@ describe('trying a driver', () => {
       'INP OFF: understood',
       'FUNC CURR: understood',
       'CURR 0: understood',
-      'VOLT 0: understood',
+      'FUNC VOLT: understood',
+      'VOLT 150: understood',
       'POW:PROT 200: refused -113 "Undefined header"',
       'POW:PROT:STAT ON: refused -113 "Undefined header"',
       'MEAS:VOLT?: understood 1.510000E+01',
       'MEAS:CURR?: understood 0.0000',
       'INP?: understood 0',
+      'FUNC CURR: understood',
+      'CURR 0: understood',
       'INP OFF: understood',
       'INP?: understood 0',
     ]);
+    expect(load.state).toMatchObject({ input: '0', FUNC: 'CURR', CURR: '0', VOLT: '150' });
     expect(load.told[0]).toBe('INP OFF');
     expect(load.told).not.toContain('INP ON');
   });
@@ -81,19 +86,74 @@ describe('trying a driver', () => {
     });
   });
 
-  it('says when the input is still on at the end', async () => {
-    const { results } = await trialOf({ replies: { 'INP?': '1' } });
-    expect(results.at(-1)).toMatchObject({
-      part: 'proof',
-      verdict: 'refused',
-      detail: expect.stringContaining('by hand') as string,
-    });
-  });
-
   it('ends where nobody answers, having said what makes safe before and after', async () => {
     const { brief, load } = await trialOf({ replies: { '*IDN?': undefined } });
     expect(brief).toEqual(['*IDN?: silent']);
     expect(load.told).toEqual(['INP OFF', '*IDN?', 'INP OFF']);
+  });
+
+  it.each([
+    ['that says that it is on', '1', 'refused', 'it says that it is on'],
+    ['that does not say whether it is on', undefined, 'silent', '"INP?" was not answered in time'],
+    ['of which nobody can read whether it is on', 'PERHAPS', 'unclear', /^expected a reply that fits/],
+  ] as const)('tries nothing on a load %s', async (_, reply, verdict, why) => {
+    const { load, results } = await trialOf({ replies: { 'INP?': reply } });
+    expect(results).toHaveLength(2);
+    expect(results[1]).toMatchObject({ part: 'proof', verdict });
+    expect(results[1]?.detail).toMatch(why);
+    expect(results[1]?.detail).toMatch(/; nothing more is tried: switch it off by hand$/);
+    expect(load.told).toEqual(['INP OFF', '*IDN?', 'INP?', 'INP OFF']);
+  });
+
+  it('stops at a message that switches the input on, and makes safe at once', async () => {
+    const operations = { ...toyDriver.operations, 'input-off': ['INP ON'] };
+    const { load, results, brief } = await trialOf({ driver: { operations } });
+    expect(brief.slice(6)).toEqual([
+      'INP ON: understood',
+      'INP?: refused 1',
+      'FUNC CURR: understood',
+      'CURR 0: understood',
+      'INP OFF: understood',
+      'INP?: understood 0',
+    ]);
+    expect(load.told.slice(load.told.indexOf('INP ON'))).toEqual([
+      ...['INP ON', 'SYST:ERR?', 'INP?', 'INP OFF', 'FUNC CURR', 'SYST:ERR?', 'CURR 0', 'SYST:ERR?'],
+      ...['INP OFF', 'SYST:ERR?', 'INP?'],
+    ]);
+    expect(results.at(-1)).toMatchObject({ part: 'proof', detail: 'off' });
+  });
+
+  it('leaves constant voltage and protections alone where the driver states no rating for them', async () => {
+    const { load, results } = await trialOf({ driver: { ratings: {} } });
+    const unsent = results.filter(({ verdict }) => verdict === 'not-sent').slice(1);
+    expect(unsent.map(({ sent }) => sent)).toEqual([
+      'FUNC VOLT',
+      'VOLT {volts}',
+      'POW:PROT {watts}',
+      'POW:PROT:STAT ON',
+    ]);
+    expect(unsent[1]?.detail).toBe(
+      'the driver states no rated voltage, and no other value is sure to do no harm',
+    );
+    expect(load.told.filter((message) => /VOLT( |$)|POW/.test(message))).toEqual([]);
+  });
+
+  it('has nothing to prove of a meter', async () => {
+    const { brief } = await trialOf({
+      driver: {
+        role: 'meter',
+        operations: { 'make-safe': ['*CLS'] },
+        readings: { voltage: { kind: 'number', ask: ['MEAS:VOLT?'], dimension: 'voltage' } },
+      },
+    });
+    expect(brief).toEqual([
+      '*IDN?: understood NURSERY,LOAD,K1,1.0',
+      'SYST:ERR?: understood',
+      '*CLS: understood',
+      '*CLS: understood',
+      'MEAS:VOLT?: understood 1.510000E+01',
+      '*CLS: understood',
+    ]);
   });
 
   it('says of another instrument that its name does not fit', async () => {
@@ -101,13 +161,28 @@ describe('trying a driver', () => {
     expect(results[0]).toMatchObject({ verdict: 'unclear', received: 'NURSERY,LOAD,K1,1.0' });
   });
 
-  it('makes safe also when it is broken off half-way', async () => {
+  it('leaves the load at 0 A and off also when nobody listens any more', async () => {
     const load = toyLoad();
     const clock = new VirtualClock(new Date(0));
     const connection = new VirtualLine(clock, load.react);
     for await (const result of tryDriver({ driver: toyDriver, connection, clock })) {
-      if (result.name === 'set-current') break;
+      if (result.name === 'set-voltage') break;
     }
-    expect(load.told.at(-1)).toBe('INP OFF');
+    expect(load.state).toMatchObject({ input: '0', FUNC: 'CURR', CURR: '0' });
+    expect(load.told.slice(-2)).toEqual(['SYST:ERR?', 'INP?']);
+  });
+
+  it('ends as it should, proof and all, when it is asked to end half-way', async () => {
+    const load = toyLoad();
+    const clock = new VirtualClock(new Date(0));
+    const connection = new VirtualLine(clock, load.react);
+    const stop = new AbortController();
+    const sent: string[] = [];
+    for await (const result of tryDriver({ driver: toyDriver, connection, clock, signal: stop.signal })) {
+      sent.push(result.sent);
+      if (result.name === 'set-voltage') stop.abort();
+    }
+    expect(sent.slice(-5)).toEqual(['VOLT 150', 'FUNC CURR', 'CURR 0', 'INP OFF', 'INP?']);
+    expect(load.state).toMatchObject({ input: '0', FUNC: 'CURR', CURR: '0' });
   });
 });
