@@ -34,7 +34,7 @@ const boundaries = Object.entries(mayImport).map(([room, allowed]) => ({
         patterns: [
           ...rooms
             .filter((other) => other !== room && !allowed.includes(other))
-            .map((other) => ({ group: [`**/${other}/*.js`], message: `${room} may not import ${other}.` })),
+            .map((other) => ({ group: [`**/${other}/**`], message: `${room} may not import ${other}.` })),
           ...(pure.includes(room) ? [{ group: ['node:*'], message: `${room} only computes.` }] : []),
         ],
       },

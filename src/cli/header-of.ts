@@ -23,7 +23,7 @@ export function headerOf({ plan, files }: LoadedPlan, bench: OpenBench, began: D
       voltageFrom: plan.bench.voltageFrom,
       simulated: plan.bench.simulation !== undefined,
     },
-    procedure: { name: procedure.name, title: procedure.title, cautions: [...procedure.cautions] },
+    procedure: { name: procedure.name, title: procedure.title, cautions: [...plan.cautions] },
     steps: plan.steps.map(({ kind, summary, parameters }) => ({
       kind: kind.kind,
       summary,

@@ -1,4 +1,5 @@
-import { openBench } from '../bench/open-bench.js';
+import { sayWhatIsOn } from '../bench/found-on.js';
+import { type OpenBench, openBench } from '../bench/open-bench.js';
 import { JournalWriter } from '../record/journal-writer.js';
 import { journalFormat, type JournalEvent } from '../record/journal-event.js';
 import { writeReadingsCsv } from '../record/readings-csv.js';
@@ -28,7 +29,7 @@ export interface PlanPerformed extends Performed {
  * @throws what opening an instrument and making the folder throw; a run that began never throws.
  */
 export async function performPlan(
-  { plan, files }: LoadedPlan,
+  loaded: LoadedPlan,
   world: World,
   options: {
     readonly runs: string;
@@ -37,6 +38,7 @@ export async function performPlan(
     readonly watch: RunWatcher;
   },
 ): Promise<PlanPerformed> {
+  const { plan } = loaded;
   const early: JournalEvent[] = [];
   let append = (event: JournalEvent): void => {
     early.push(event);
@@ -54,19 +56,14 @@ export async function performPlan(
     },
   });
   try {
-    const began = world.clock.wall();
-    const folder = makeRunFolder(options.runs, began, plan.module.name, plan.procedure.name);
-    writeHeader(folder, headerOf({ plan, files }, bench, began));
-    const journal = new JournalWriter(folder.journal, () => world.clock.now());
+    const { folder, journal } = await beginRecord(loaded, world, bench, options.runs);
     try {
+      early.forEach((event) => {
+        journal.append(event);
+      });
       append = (event) => {
         journal.append(event);
       };
-      append({ event: 'opened', format: journalFormat, wallClock: began.toISOString() });
-      for (const { role, address, identity } of bench.instruments) {
-        append({ event: 'instrument', role, address, identity });
-      }
-      early.forEach(append);
       const performed = await perform({ plan, bench, journal, clock: world.clock, ...options });
       return { ...performed, folder, understood: finish(folder) };
     } finally {
@@ -74,6 +71,29 @@ export async function performPlan(
     }
   } finally {
     await bench.close();
+  }
+}
+
+/** The folder, what was planned, and the first lines of the journal: without them nothing is begun. */
+async function beginRecord(
+  loaded: LoadedPlan,
+  { clock }: World,
+  bench: OpenBench,
+  runs: string,
+): Promise<{ readonly folder: RunFolder; readonly journal: JournalWriter }> {
+  const { plan } = loaded;
+  const began = clock.wall();
+  try {
+    const folder = makeRunFolder(runs, began, plan.module.name, plan.procedure.name);
+    const header = writeHeader(folder, headerOf(loaded, bench, began));
+    const journal = new JournalWriter(folder.journal, () => clock.now());
+    journal.append({ event: 'opened', format: journalFormat, wallClock: began.toISOString(), header });
+    for (const { role, address, identity } of bench.instruments) {
+      journal.append({ event: 'instrument', role, address, identity });
+    }
+    return { folder, journal };
+  } catch (error) {
+    throw await sayWhatIsOn(bench.load.instrument, error);
   }
 }
 

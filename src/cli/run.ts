@@ -1,6 +1,5 @@
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
-import { formatQuantity } from '../quantity/format-quantity.js';
-import { alignTable } from '../report/align.js';
+import { jsonText } from '../report/json-text.js';
 import type { Plan } from '../run/plan.js';
 import { OperatorAbsentError } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
@@ -9,6 +8,7 @@ import { errorText } from './error-text.js';
 import { statusOfOutcome } from './exit-status.js';
 import { loadPlan } from './load-plan.js';
 import { performPlan, type PlanPerformed } from './perform-plan.js';
+import { planAsJson, planAsText } from './plan-shown.js';
 import { ProgressLine } from './progress-line.js';
 import { shown } from './shown.js';
 import { simulatedOperator } from './simulated-operator.js';
@@ -30,7 +30,7 @@ export interface RunWanted {
 export async function run(wanted: RunWanted, streams: Streams): Promise<ExitCode> {
   const loaded = await loadPlan({ procedure: wanted.procedure, bench: wanted.bench, modules: wanted.module });
   if (wanted.dryRun === true) {
-    streams.stdout.write(planAsText(loaded.plan));
+    streams.stdout.write(wanted.json === true ? jsonText(planAsJson(loaded.plan)) : planAsText(loaded.plan));
     return exitCodes.conforms;
   }
   const world = await worldOf(loaded.plan.bench, loaded.plan.drivers);
@@ -84,24 +84,6 @@ function requireOperator(plan: Plan, operator: Operator, yes: boolean): void {
   const needing = plan.steps.flatMap(({ kind }, index) =>
     kind.needs.operator === 'always' ? [`step ${index + 1} (${kind.kind})`] : [],
   );
-  if (!yes && plan.procedure.cautions.length > 0) needing.push('its cautions');
+  if (!yes && plan.cautions.length > 0) needing.push('its cautions');
   if (needing.length > 0) throw new OperatorAbsentError(needing);
-}
-
-function planAsText(plan: Plan): string {
-  const rows = plan.steps.map(({ kind, summary, duration }, index) => [
-    `${index + 1}`,
-    kind.kind,
-    summary,
-    `about ${formatQuantity(Math.ceil(duration), 'time')}`,
-  ]);
-  return [
-    `${plan.procedure.name}: ${plan.procedure.title}`,
-    `module ${plan.modules.map((module) => module.name).join(', ')} on ${plan.bench.name}`,
-    ...alignTable(rows, ['right', 'left', 'left', 'left']).map((row) => `  ${row}`),
-    `never above ${formatQuantity(plan.ceilings.current.value, 'current')}, ` +
-      `${formatQuantity(plan.ceilings.voltage.value, 'voltage')}, ${formatQuantity(plan.ceilings.power.value, 'power')}`,
-    `about ${formatQuantity(Math.ceil(plan.duration / 60) * 60, 'time')} in all; nothing was touched`,
-    '',
-  ].join('\n');
 }

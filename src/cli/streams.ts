@@ -1,3 +1,5 @@
+import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+
 /** What a command reads from and writes to; handed in, so that a test can look. */
 export interface Streams {
   readonly stdin: NodeJS.ReadStream;
@@ -6,8 +8,38 @@ export interface Streams {
   readonly environment: NodeJS.ProcessEnv;
 }
 
-/** A reader that goes away (a closed terminal, `| head`) must not end a run that is not yet safe. */
-export function processStreams(): Streams {
-  for (const stream of [process.stdout, process.stderr]) stream.on('error', () => undefined);
-  return { stdin: process.stdin, stdout: process.stdout, stderr: process.stderr, environment: process.env };
+/** What was to be printed went nowhere: the disk behind stdout is full, say. */
+export class OutputLostError extends RailproofError {
+  readonly code = 'OUTPUT_LOST';
+  readonly exitCode = exitCodes.inputOutput;
+
+  constructor(cause: NodeJS.ErrnoException) {
+    super(`the result could not be printed: ${cause.message}`, {
+      advice: 'the record, where one was made, is whole: `railproof analyse` prints it again',
+      cause,
+    });
+  }
+}
+
+/** A reader that goes away of its own will (`| head`, a closed terminal) has seen enough. */
+const readerLeft: ReadonlySet<string | undefined> = new Set(['EPIPE', 'EIO', 'ERR_STREAM_DESTROYED']);
+
+/** The streams of this process, and what became of the output. A reader that goes away must not end a run that is not yet safe. */
+export function processStreams(): Streams & { readonly lost: () => Promise<OutputLostError | undefined> } {
+  let lost: OutputLostError | undefined;
+  process.stderr.on('error', () => undefined);
+  process.stdout.on('error', (error: NodeJS.ErrnoException) => {
+    if (!readerLeft.has(error.code)) lost ??= new OutputLostError(error);
+  });
+  return {
+    stdin: process.stdin,
+    stdout: process.stdout,
+    stderr: process.stderr,
+    environment: process.env,
+    lost: async () => {
+      // Errors of a stream come a turn after the write.
+      await new Promise((resolve) => setImmediate(resolve));
+      return lost;
+    },
+  };
 }

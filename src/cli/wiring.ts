@@ -2,6 +2,7 @@ import { fileURLToPath } from 'node:url';
 import { dirname, sep } from 'node:path';
 import { findingNames } from '../analysis/finding-names.js';
 import type { Clock } from '../clock/clock.js';
+import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { realClock } from '../clock/real-clock.js';
 import { VirtualClock } from '../clock/virtual-clock.js';
 import type { Bench } from '../files/bench.js';
@@ -35,13 +36,36 @@ export interface BenchDrivers {
   readonly meter?: FileRead<Driver>;
 }
 
-/** The drivers that a bench names, shipped or beside the bench file. @throws BadFileError, MissingFileError */
+/** A bench gives an instrument a part that its driver is not for. */
+export class WrongRoleError extends RailproofError {
+  readonly code = 'WRONG_ROLE';
+  readonly exitCode = exitCodes.badFile;
+
+  constructor(bench: string, role: string, driver: Driver) {
+    super(
+      `${bench}: instruments.${role}: ${driver.name} is a driver for a ${driver.role}, not for a ${role}`,
+      {
+        advice: '`railproof drivers` lists the shipped ones with their roles',
+      },
+    );
+  }
+}
+
+/**
+ * The drivers that a bench names, shipped or beside the bench file, each for the role it is given.
+ * @throws BadFileError, MissingFileError, NotShippedError, WrongRoleError
+ */
 export async function readBenchDrivers(bench: FileRead<Bench>): Promise<BenchDrivers> {
   const where = { relativeTo: dirname(bench.path), shipped: shipped.drivers };
+  const read = async (role: keyof Bench['instruments'], name: string): Promise<FileRead<Driver>> => {
+    const driver = await readDriver(name, where);
+    if (driver.value.role !== role) throw new WrongRoleError(bench.path, role, driver.value);
+    return driver;
+  };
   const { load, meter } = bench.value.instruments;
   return {
-    load: await readDriver(load.driver, where),
-    ...(meter === undefined ? {} : { meter: await readDriver(meter.driver, where) }),
+    load: await read('load', load.driver),
+    ...(meter === undefined ? {} : { meter: await read('meter', meter.driver) }),
   };
 }
 

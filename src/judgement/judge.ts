@@ -60,8 +60,8 @@ function decideQuantity(
     ...(limit.standardUncertainty === 0 ? freedomOf(finding) : {}),
   });
   // A least value can show that there is enough, and that there is too much, but neither of their opposites.
-  const unproven = kind === 'at-least' ? 'does-not-conform' : 'conforms';
-  if (finding.bound === 'least' && shown.outcome === unproven)
+  const proven = kind === 'at-least' ? 'conforms' : 'does-not-conform';
+  if (finding.bound === 'least' && shown.outcome !== proven)
     return undecided(name, requirement, 'it may be more: no limit was met');
   return {
     finding: name,

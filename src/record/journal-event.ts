@@ -29,6 +29,8 @@ export interface Opened {
   readonly format: typeof journalFormat;
   /** ISO 8601, UTC. */
   readonly wallClock: string;
+  /** SHA-256 of run.json, so that what was planned can't be changed afterwards unnoticed either. */
+  readonly header: string;
 }
 
 export interface InstrumentAnswered {
@@ -160,6 +162,7 @@ export interface Ended {
 
 /** These are sealed, and flushed to the disk before the run goes on. */
 export const sealedEvents: ReadonlySet<JournalEvent['event']> = new Set([
+  'opened',
   'point-ended',
   'input',
   'guard-tripped',

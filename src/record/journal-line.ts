@@ -62,7 +62,7 @@ type Shapes = {
 };
 
 const shapeOf: Shapes = {
-  opened: { format: isOneOf([journalFormat]), wallClock: isText },
+  opened: { format: isOneOf([journalFormat]), wallClock: isText, header: isText },
   instrument: { role: isText, address: isText, identity: isText },
   caution: { name: isText, by: isOneOf(['operator', '--yes', 'simulated-operator']) },
   'step-began': { step: isCount, kind: isText },

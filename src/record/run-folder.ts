@@ -1,5 +1,16 @@
-import { closeSync, fsyncSync, mkdirSync, openSync, renameSync, rmSync, writeFileSync } from 'node:fs';
-import { basename, join } from 'node:path';
+import { createHash } from 'node:crypto';
+import {
+  closeSync,
+  existsSync,
+  fsyncSync,
+  mkdirSync,
+  openSync,
+  renameSync,
+  rmSync,
+  statSync,
+  writeFileSync,
+} from 'node:fs';
+import { basename, dirname, join } from 'node:path';
 import { RailproofError } from '../errors/railproof-error.js';
 import { RecordWriteError } from './record-error.js';
 import type { RunHeader } from './run-header.js';
@@ -32,7 +43,7 @@ export function makeRunFolder(runs: string, began: Date, module: string, procedu
   const time = began.toISOString().replace(/[-:]/g, '').replace(/\.\d+/, '');
   const wanted = join(runs, `${time}-${module}-${procedure}`);
   try {
-    mkdirSync(runs, { recursive: true });
+    makeFolders(runs);
   } catch (cause) {
     throw new RecordWriteError(runs, cause);
   }
@@ -48,18 +59,36 @@ export function makeRunFolder(runs: string, began: Date, module: string, procedu
   }
 }
 
-/** Writes run.json and flushes it. @throws RecordWriteError */
-export function writeHeader(folder: RunFolder, header: RunHeader): void {
+/**
+ * A folder and those above it that are missing, one at a time: below a folder where none can be made
+ * (`/proc`), Node's own recursive way never comes back.
+ */
+function makeFolders(path: string): void {
+  try {
+    mkdirSync(path);
+  } catch (cause) {
+    const { code } = cause as NodeJS.ErrnoException;
+    if (code === 'EEXIST' && statSync(path).isDirectory()) return;
+    if (code !== 'ENOENT' || existsSync(dirname(path)) || dirname(path) === path) throw cause;
+    makeFolders(dirname(path));
+    mkdirSync(path);
+  }
+}
+
+/** Writes run.json and flushes it; hands over its SHA-256, for the journal to begin with. @throws RecordWriteError */
+export function writeHeader(folder: RunFolder, header: RunHeader): string {
   const path = join(folder.path, 'run.json');
+  const text = JSON.stringify(header, null, 2) + '\n';
   try {
     const file = openSync(path, 'wx');
     try {
-      writeFileSync(file, JSON.stringify(header, null, 2) + '\n');
+      writeFileSync(file, text);
       fsyncSync(file);
     } finally {
       closeSync(file);
     }
     flushFolder(folder.path);
+    return createHash('sha256').update(text).digest('hex');
   } catch (cause) {
     throw new RecordWriteError(path, cause);
   }

@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import { existsSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { z } from 'zod';
@@ -81,8 +82,14 @@ const headerSchema = z.object({
 
 export type RunHeader = Readonly<z.infer<typeof headerSchema>>;
 
+export interface HeaderRead {
+  readonly header: RunHeader;
+  /** Of the file as it is now. */
+  readonly sha256: string;
+}
+
 /** @throws NoRecordError, BadRecordError */
-export function readHeader(folder: string): RunHeader {
+export function readHeader(folder: string): HeaderRead {
   const path = join(folder, 'run.json');
   let text: string;
   try {
@@ -90,6 +97,11 @@ export function readHeader(folder: string): RunHeader {
   } catch (cause) {
     throw new NoRecordError(folder, existsSync(folder) && !existsSync(path) ? undefined : cause);
   }
+  const sha256 = createHash('sha256').update(text).digest('hex');
+  return { header: parseHeader(text, path), sha256 };
+}
+
+function parseHeader(text: string, path: string): RunHeader {
   let data: unknown;
   try {
     data = JSON.parse(text);

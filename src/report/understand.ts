@@ -13,11 +13,14 @@ import type { Result } from './result.js';
  */
 export function understand(path: string): Result {
   const folder = runFolderAt(path);
-  const header = readHeader(path);
+  const { header, sha256 } = readHeader(path);
   const collector = new EvidenceCollector(header);
-  const integrity = readJournal(folder.journal, checkJournal(folder.journal), (event) => {
+  let begunWith = sha256;
+  const journal = readJournal(folder.journal, checkJournal(folder.journal), (event) => {
+    if (event.event === 'opened') begunWith = event.header;
     collector.add(event);
   });
+  const integrity = begunWith === sha256 ? journal : changedHeader(journal);
   const evidence = collector.result();
   const findings = analyse(evidence);
   const decisions = judge(header, findings);
@@ -30,6 +33,12 @@ export function understand(path: string): Result {
     decisions,
     outcome: outcomeOf(integrity, decisions),
   };
+}
+
+/** What was planned, on what and with what, decides what the readings mean: nothing of it may be changed. */
+function changedHeader({ lines, bytes }: Integrity): Integrity {
+  const problem = 'it does not begin with the run.json that is here now';
+  return { kind: 'damaged', lines, bytes, line: 1, problem };
 }
 
 /** Nobody knows what the missing part of a record would have shown, so it can't say that a module conforms. */

@@ -1,4 +1,5 @@
-import type { CautionName } from '../files/procedure.js';
+import type { Module } from '../files/module.js';
+import type { CautionName, Procedure } from '../files/procedure.js';
 
 /** What must be read and acknowledged before anything is energised. */
 export const cautionTexts: Readonly<Record<CautionName, string>> = {
@@ -11,5 +12,19 @@ export const cautionTexts: Readonly<Record<CautionName, string>> = {
   'floating-outputs':
     'Outputs in a stack float at the sum of the voltages below them. Above 60 V DC they are no longer touch-safe.',
   'earth-link-removed':
-    'Without its earth link the output has lost the protection against a fault from primary to secondary. Use a residual-current device; local codes and a licensed person decide whether it may be used so.',
+    'A change of this module has to do with earth. Without its earth link an output has lost the protection against a fault from primary to secondary. Use a residual-current device; local codes and a licensed person decide whether it may be used so.',
 };
+
+/**
+ * What must be acknowledged for a procedure on a module: what the procedure names, and what the module's own
+ * file tells whatever the procedure forgot: that it is fed from the mains, that its earth was worked on.
+ */
+export function cautionsFor(procedure: Procedure, module: Module): readonly CautionName[] {
+  return [
+    ...new Set([
+      ...(module.input === 'mains' ? (['mains'] as const) : []),
+      ...procedure.cautions,
+      ...(module.changes.some(({ what }) => /\bearth/i.test(what)) ? (['earth-link-removed'] as const) : []),
+    ]),
+  ];
+}

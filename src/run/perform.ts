@@ -81,7 +81,9 @@ async function attempt(performance: Performance): Promise<Ending> {
     return { how: 'completed' };
   } catch (error) {
     if (error instanceof GuardTrippedError) noteTrip(performance, error);
-    return endingOf(error, performance.signal);
+    const { signal } = performance;
+    // Whoever asked for an end before something else failed gave the first reason, and the first one wins.
+    return signal.aborted ? endingOf(signal.reason, signal) : endingOf(error);
   }
 }
 
@@ -96,7 +98,7 @@ function noteTrip({ journal }: Performance, trip: GuardTrippedError): void {
 
 async function begin({ plan, bench, journal, operator, signal }: Performance): Promise<void> {
   await checkInputIsOff(bench);
-  for (const caution of plan.procedure.cautions) {
+  for (const caution of plan.cautions) {
     signal.throwIfAborted();
     const acknowledged = await operator.acknowledge(caution, cautionTexts[caution], signal);
     if (acknowledged === 'refused')

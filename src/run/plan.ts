@@ -3,11 +3,12 @@ import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import type { Bench } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
 import type { Module } from '../files/module.js';
-import type { Procedure, ProcedureStep } from '../files/procedure.js';
+import type { CautionName, Procedure, ProcedureStep } from '../files/procedure.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { QuantityOrShare, Ratio, ReferenceName, Seconds } from '../quantity/quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
 import type { Known, StepKind } from '../steps/step-kind.js';
+import { cautionsFor } from './cautions.js';
 
 /** A procedure that fits its module and its bench. */
 export interface Plan {
@@ -18,6 +19,8 @@ export interface Plan {
   readonly drivers: PlanDrivers;
   readonly ceilings: Ceilings;
   readonly steps: readonly PlanStep[];
+  /** What must be acknowledged before anything is switched on. */
+  readonly cautions: readonly CautionName[];
   readonly duration: Seconds;
   /** What refers to the nameplate. */
   readonly known: Known;
@@ -93,7 +96,8 @@ export function makePlan(
   });
   if (problems.length > 0) throw new PlanError(problems);
   const duration = steps.reduce((sum, step) => sum + step.duration, 0);
-  return { procedure, bench, modules, module, drivers, ceilings, steps, duration, known };
+  const cautions = cautionsFor(procedure, module);
+  return { procedure, bench, modules, module, drivers, ceilings, steps, cautions, duration, known };
 }
 
 function problemsOf(

@@ -86,7 +86,7 @@ export function eventsOf(steps: readonly Step[], ended = true): readonly TimedEv
   const add = (event: JournalEvent): void => {
     events.push({ t, ...event });
   };
-  add({ event: 'opened', format: 'railproof/journal 1', wallClock: '2026-12-01T08:30:00.000Z' });
+  add({ event: 'opened', format: 'railproof/journal 1', wallClock: '2026-12-01T08:30:00.000Z', header: '' });
   steps.forEach(({ kind, points = [], recoveries = [], more = [] }, index) => {
     const step = index + 1;
     add({ event: 'step-began', step, kind });

@@ -20,7 +20,7 @@ describe('the header of a record', () => {
   it('reads back as it was written', () => {
     const folder = makeRunFolder(place('runs'), began, 'K1', 'real-limit');
     writeHeader(folder, someHeader);
-    expect(readHeader(folder.path)).toEqual(someHeader);
+    expect(readHeader(folder.path).header).toEqual(someHeader);
   });
 
   it.each([

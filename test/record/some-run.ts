@@ -20,6 +20,7 @@ export const opened: JournalEvent = {
   event: 'opened',
   format: journalFormat,
   wallClock: '2026-11-20T09:00:00.000Z',
+  header: '',
 };
 
 const reading = (point: number, sample: number, of: string, what: string, value: number): JournalEvent => ({

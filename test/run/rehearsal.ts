@@ -92,7 +92,7 @@ export async function rehearse(change: RehearsalChange): Promise<Rehearsal> {
     stepKinds,
   );
   const journal = new JournalWriter(path, () => place.clock.now());
-  append({ event: 'opened', format: journalFormat, wallClock: place.clock.wall().toISOString() });
+  append({ event: 'opened', format: journalFormat, wallClock: place.clock.wall().toISOString(), header: '' });
   const bench = await place.open();
   const watched: string[] = [];
   const performed = await perform({
