@@ -7,7 +7,10 @@ import { type Finding, inWords } from './finding.js';
  */
 export function answerFindings(evidence: Evidence): readonly Finding[] {
   return stepsWithAnswers(evidence).map(({ step, answer }) => {
-    const words = inWords(`answer-of-${answer.name}`, answer.answer, { step, note: 'as the operator read it' });
+    const words = inWords(`answer-of-${answer.name}`, answer.answer, {
+      step,
+      note: 'as the operator read it',
+    });
     return answer.value === undefined || answer.dimension === undefined
       ? words
       : { ...words, value: answer.value, dimension: answer.dimension };

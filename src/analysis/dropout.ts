@@ -20,51 +20,47 @@ export interface DropoutBracket {
 }
 
 /**
- * The bracket of the search, or of a ramp that ended early where no search came to one; undefined when
- * everything asked for was held.
+ * The bracket of the whole record: below the lowest set-point that any step saw dropped, the highest that
+ * was held; undefined when everything asked for was held. A search goes before a ramp where both speak.
  */
 export function dropoutBracket(evidence: Evidence): DropoutBracket | undefined {
-  const inRecord = heldPoints(evidence.steps);
-  return ['dropout-search', 'load-ramp']
-    .flatMap((kind) => stepsOf(evidence, kind))
-    .flatMap((step) => bracketOf(step, inRecord))
+  const steps = ['dropout-search', 'load-ramp'].flatMap((kind) => stepsOf(evidence, kind));
+  const dropped = steps
+    .flatMap(droppedPoints)
+    .sort((one, other) => one.set - other.set)
     .at(0);
+  if (dropped === undefined) return undefined;
+  const below = (points: readonly CurvePoint[]): readonly CurvePoint[] =>
+    points.filter((point) => point.set < dropped.set);
+  const holding = steps.find((one) => below(heldPoints([one])).length > 0);
+  if (holding === undefined) return undefined;
+  const held = heldPoints([holding]);
+  const highest = [...below(held)].sort((one, other) => one.set - other.set).at(-1);
+  if (highest === undefined) return undefined;
+  const flowing = readBackLine(held);
+  const most = held.reduce((highest, point) => Math.max(highest, point.set), 0);
+  return {
+    step: dropped.step,
+    held: flowing(highest.set),
+    dropped: flowing(dropped.set),
+    fall: highest.voltage - dropped.voltage,
+    heldAbove: most >= dropped.set ? flowing(most) - flowing(dropped.set) : undefined,
+  };
 }
 
-/** Where the step itself held nothing below, what other steps of the record held is the lower end. */
-function bracketOf(step: StepEvidence, inRecord: readonly CurvePoint[]): readonly DropoutBracket[] {
-  const dropped = step.points
-    .flatMap(({ outcome, phase, set, moduleVoltage }) =>
-      outcome === 'dropped' && phase !== 'recovery' && set.current !== undefined
-        ? [
-            {
-              set: set.current,
-              voltage: moduleVoltage.count > 0 ? moduleVoltage.mean : Number.NEGATIVE_INFINITY,
-            },
-          ]
-        : [],
-    )
-    .sort((one, other) => one.set - other.set)
-    .at(0);
-  if (dropped === undefined) return [];
-  const inStep = heldPoints([step]);
-  const held = inStep.some((point) => point.set < dropped.set) ? inStep : inRecord;
-  const highest = held
-    .filter((point) => point.set < dropped.set)
-    .sort((one, other) => one.set - other.set)
-    .at(-1);
-  if (highest === undefined) return [];
-  const flowing = readBackLine(held);
-  const most = inStep.reduce((highest, point) => Math.max(highest, point.set), 0);
-  return [
-    {
-      step: step.step,
-      held: flowing(highest.set),
-      dropped: flowing(dropped.set),
-      fall: highest.voltage - dropped.voltage,
-      heldAbove: most >= dropped.set ? flowing(most) - flowing(dropped.set) : undefined,
-    },
-  ];
+interface DroppedPoint {
+  readonly step: number;
+  readonly set: Amperes;
+  /** Endlessly low where none could be read. */
+  readonly voltage: Volts;
+}
+
+function droppedPoints({ step, points }: StepEvidence): readonly DroppedPoint[] {
+  return points.flatMap(({ outcome, phase, set, moduleVoltage }) => {
+    if (outcome !== 'dropped' || phase === 'recovery' || set.current === undefined) return [];
+    const voltage = moduleVoltage.count > 0 ? moduleVoltage.mean : Number.NEGATIVE_INFINITY;
+    return [{ step, set: set.current, voltage }];
+  });
 }
 
 /**

@@ -35,6 +35,8 @@ export const findingNames = {
 export function dimensionOfFinding(name: string): Dimension | 'word' | undefined {
   const names: Readonly<Record<string, Dimension | 'word'>> = findingNames;
   if (Object.hasOwn(names, name)) return names[name];
-  const family = Object.keys(names).find((one) => one.endsWith('*') && name.length >= one.length && name.startsWith(one.slice(0, -1)));
+  const family = Object.keys(names).find(
+    (one) => one.endsWith('*') && name.length >= one.length && name.startsWith(one.slice(0, -1)),
+  );
   return family === undefined ? undefined : names[family];
 }

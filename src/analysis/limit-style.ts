@@ -79,6 +79,9 @@ function styleOf(step: StepEvidence, overload: Overload, module: Module): Verdic
   const idle = share(({ current }) => current < nothing * dropout);
   const active = share(({ current }) => current > limitSized * dropout);
   const gone = share(({ voltage }) => voltage < collapsed * openCircuit);
+  if (recovered === 'stayed-off' && step.recoveries[1]?.outcome === 'stayed-off') {
+    return { style: 'undetermined', because: 'it gave no voltage again, even after its input was cycled' };
+  }
   if (recovered === 'stayed-off') {
     return { style: 'latch-off', because: 'after the overload the voltage stayed away' };
   }

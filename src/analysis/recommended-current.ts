@@ -1,6 +1,7 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Evidence } from './evidence.js';
 import type { Factor, Finding } from './finding.js';
+import { gone } from './recovery.js';
 import type { Usable } from './usable-current.js';
 
 const because = {
@@ -20,7 +21,8 @@ export function recommendedFindings(evidence: Evidence, usable: Usable | undefin
   const { margin } = evidence.header.derating;
   const low = Math.max(0, interval[0]);
   const derated = low * margin;
-  const capped = Math.min(derated, rated.current);
+  const failed = gone(evidence);
+  const capped = failed ? 0 : Math.min(derated, rated.current);
   const factors: Factor[] = [
     {
       name: 'lower bound',
@@ -38,7 +40,14 @@ export function recommendedFindings(evidence: Evidence, usable: Usable | undefin
       reason: 'no derating over temperature was given; it holds for the surroundings of the test',
     },
   ];
-  if (derated > rated.current) {
+  if (failed) {
+    factors.push({
+      name: 'failure',
+      factor: 0,
+      reason:
+        'it gave no voltage again, even after its input was cycled: not to be used before it is known why',
+    });
+  } else if (derated > rated.current) {
     factors.push({
       name: 'nameplate',
       factor: rated.current / derated,
@@ -53,8 +62,14 @@ export function recommendedFindings(evidence: Evidence, usable: Usable | undefin
       standardUncertainty: null,
       interval: null,
       step,
-      ...(usable.setBy === 'highest-tried' && derated <= rated.current ? { bound: 'least' as const } : {}),
-      note: derated > rated.current ? 'the nameplate sets it' : because[usable.setBy],
+      ...(usable.setBy === 'highest-tried' && derated <= rated.current && !failed
+        ? { bound: 'least' as const }
+        : {}),
+      note: failed
+        ? 'its failure sets it'
+        : derated > rated.current
+          ? 'the nameplate sets it'
+          : because[usable.setBy],
       budget: [],
       factors,
     },

@@ -50,3 +50,12 @@ function noteOf({ after }: { readonly after: number }, count: number): string {
 export function latched(evidence: Evidence): boolean {
   return evidence.steps.some((step) => step.recoveries.some((recovery) => recovery.outcome !== 'came-back'));
 }
+
+/** Whether the module stayed off even after its input was cycled: it is broken, or its input is gone. */
+export function gone(evidence: Evidence): boolean {
+  return evidence.steps.some(({ recoveries }) =>
+    recoveries.some(
+      ({ outcome }, index) => outcome === 'stayed-off' && recoveries[index + 1]?.outcome === 'stayed-off',
+    ),
+  );
+}

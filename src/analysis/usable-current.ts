@@ -3,7 +3,7 @@ import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
 import { promised, promisedErrors } from './promised-errors.js';
-import { latched } from './recovery.js';
+import { gone, latched } from './recovery.js';
 
 /** The usable current, and whether a limit of the module sets it or only how far it was tried. */
 export interface Usable {
@@ -25,7 +25,7 @@ export function usableCurrent(
     readonly held: readonly CurvePoint[];
   },
 ): Usable | undefined {
-  const latch = latched(evidence) ? '; an overload switches it off until its input is cycled' : '';
+  const latch = afterOverload(evidence);
   const lowest = [
     { limit: found.unsteady, because: 'above that its output swings' },
     { limit: found.dropout, because: 'above that it drops out' },
@@ -39,6 +39,11 @@ export function usableCurrent(
     finding: { ...limit, name: 'usable-current', note: `${because}${latch}` },
     setBy: 'limit',
   };
+}
+
+function afterOverload(evidence: Evidence): string {
+  if (gone(evidence)) return '; it gave no voltage again after that';
+  return latched(evidence) ? '; an overload switches it off until its input is cycled' : '';
 }
 
 function lowerEnd({ interval, value }: Finding): number {

@@ -123,6 +123,7 @@ async function goThrough({
   watch,
 }: Performance): Promise<void> {
   const known = { ...plan.known };
+  const tried = {};
   const limits = { ...plan.ceilings, ratedVoltage: plan.module.rated.voltage };
   for (const [index, planned] of plan.steps.entries()) {
     signal.throwIfAborted();
@@ -139,6 +140,7 @@ async function goThrough({
       signal,
       operator,
       known,
+      tried,
       show: (progress) => {
         watch.progress(step, progress);
       },

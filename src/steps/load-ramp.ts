@@ -1,14 +1,19 @@
 import { z } from 'zod';
 import { count, quantity, quantityOrShare } from '../files/building-blocks.js';
 import { formatShare } from '../quantity/format-quantity.js';
+import type { Seconds } from '../quantity/quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
 import { defineStep } from './define-step.js';
 import { holds } from './holding.js';
 import { openCircuitVoltage } from './known-voltage.js';
 import { Points } from './point.js';
+import { comeBack } from './recover.js';
+import { ModuleStaysOffError } from './step-error.js';
 import { longestDwell } from './dwell.js';
 
 const readingTime = 0.1;
+/** How long a module that did not hold a point may take to come back. */
+const patience: Seconds = 10;
 
 export const loadRamp = defineStep({
   kind: 'load-ramp',
@@ -59,12 +64,17 @@ export const loadRamp = defineStep({
         judge: holds(voltage, parameters.sag, current),
       });
       if (outcome === 'dropped') {
+        context.tried.dropped = Math.min(current, context.tried.dropped ?? current);
         context.journal.append({
           event: 'notice',
           text: 'the module did not hold this point; the ramp ends here',
         });
-        break;
+        const back = await comeBack(context, points, voltage * (1 - parameters.sag), patience);
+        if (back === 'stayed-off') throw new ModuleStaysOffError(false);
+        await load.unload();
+        return;
       }
+      context.tried.held = Math.max(current, context.tried.held ?? current);
     }
     await load.unload();
     await load.inputOff();

@@ -1,5 +1,6 @@
 import type { Seconds, Volts } from '../quantity/quantity.js';
 import type { Points } from './point.js';
+import { ModuleStaysOffError } from './step-error.js';
 import type { StepContext } from './step-kind.js';
 
 export type CameBack = 'came-back' | 'came-back-after-cycling' | 'stayed-off';
@@ -9,6 +10,7 @@ const lookEvery: Seconds = 0.02;
 /**
  * Takes the load off after an overload and waits for the voltage to be back. A module that stays off has
  * latched: where someone can act they are asked to cycle its input, and the wait begins again.
+ * @throws ModuleStaysOffError when it stays off after that too.
  */
 export async function comeBack(
   context: StepContext,
@@ -50,6 +52,7 @@ export async function comeBack(
   const cycled = await waitForVoltage(points, clock.now(), least, patience);
   const outcome = cycled.back ? 'came-back-after-cycling' : 'stayed-off';
   journal.append({ event: 'recovery', step, outcome, after: cycled.after, within: cycled.within });
+  if (!cycled.back) throw new ModuleStaysOffError(true);
   return outcome;
 }
 

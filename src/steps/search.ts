@@ -65,7 +65,8 @@ export class Search {
     const { load } = this.#context.bench;
     await load.unload();
     await load.inputOn();
-    await this.#probe('start', Math.min(this.#parameters.from, this.#parameters.ceiling));
+    this.#dropped = this.#droppedBefore();
+    await this.#probe('start', this.#firstCurrent());
     await this.#climb();
     await this.#halve();
     await this.#closeInOnSteadiness();
@@ -74,6 +75,20 @@ export class Search {
     await load.unload();
     await load.inputOff();
     return { held: this.#held, dropped: this.#dropped };
+  }
+
+  /** What an earlier step saw the module drop is dropped, and need not be proved again. */
+  #droppedBefore(): Amperes | undefined {
+    const { dropped } = this.#context.tried;
+    return dropped !== undefined && dropped <= this.#parameters.ceiling ? dropped : undefined;
+  }
+
+  /** As told; but where a step has seen the module drop at no more than that, what it held, or half of it. */
+  #firstCurrent(): Amperes {
+    const from = Math.min(this.#parameters.from, this.#parameters.ceiling);
+    const { held, dropped } = this.#context.tried;
+    if (dropped === undefined || from < dropped) return from;
+    return held !== undefined && held < dropped ? held : dropped / 2;
   }
 
   async #climb(): Promise<void> {

@@ -16,3 +16,18 @@ export class AnswerNotUnderstoodError extends RailproofError {
     this.attempts = facts.attempts;
   }
 }
+
+/** After an overload the module's voltage never came back; going on would only work something broken. */
+export class ModuleStaysOffError extends RailproofError {
+  readonly code = 'MODULE_STAYS_OFF';
+  readonly exitCode = exitCodes.stopped;
+
+  constructor(cycled: boolean) {
+    super(
+      cycled
+        ? 'the module stays off after an overload, even after its input was cycled'
+        : 'the module stays off after an overload, and nobody is here to cycle its input',
+      { advice: 'do not use it before it is known why' },
+    );
+  }
+}

@@ -3,7 +3,7 @@ import type { OpenBench } from '../bench/open-bench.js';
 import type { GuardLimits } from '../bench/guards.js';
 import type { Clock } from '../clock/clock.js';
 import type { Module } from '../files/module.js';
-import type { QuantityOrShare, ReferenceName, Seconds } from '../quantity/quantity.js';
+import type { Amperes, QuantityOrShare, ReferenceName, Seconds } from '../quantity/quantity.js';
 import type { JournalEvent } from '../record/journal-event.js';
 import type { Operator } from './operator.js';
 
@@ -50,7 +50,16 @@ export interface StepContext {
   readonly operator: Operator;
   /** The nameplate and what was measured so far. */
   readonly known: Known;
+  /** What the module was seen to hold and to drop so far, so that no step works it blindly. */
+  readonly tried: Tried;
   readonly show: (progress: Progress) => void;
+}
+
+export interface Tried {
+  /** The highest set-point that was held. */
+  held?: Amperes;
+  /** The lowest set-point that was not. */
+  dropped?: Amperes;
 }
 
 export type Known = Partial<Record<ReferenceName, number>>;

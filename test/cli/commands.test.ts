@@ -30,8 +30,19 @@ describe('run', () => {
     const { status, stdout } = await railproof('run', 'real-limit', ...nursery, '--runs', runs, '--dry-run');
     expect(status).toBe(0);
     expect(stdout).toMatch(/2 {2}load-ramp +21 points from 0 A to 100 % of rated-current/);
-    expect(stdout).toContain('never above 8 A, 60 V, 150 W');
+    expect(stdout).toContain('cautions to acknowledge: mains, hot-surfaces, earth-link-removed');
+    expect(stdout).toContain('never above 8 A (the bench), 60 V (the bench), 150 W (the bench)');
     expect(() => readdirSync(runs)).toThrow('ENOENT');
+  });
+
+  it('--dry-run --json is the plan for a program', async () => {
+    const { status, stdout } = await railproof('run', 'real-limit', ...nursery, '--dry-run', '--json');
+    expect(JSON.parse(stdout)).toMatchObject({
+      format: 'railproof/plan 1',
+      steps: [{ kind: 'open-circuit', seconds: 5 }, { kind: 'load-ramp' }, { kind: 'dropout-search' }],
+      cautions: ['mains', 'hot-surfaces', 'earth-link-removed'],
+    });
+    expect(status).toBe(0);
   });
 
   it('--json prints one object on stdout, and nothing else there', async () => {
@@ -175,6 +186,18 @@ describe('check', () => {
     expect(stdout).toBe('fixtures/modules/K1.yaml: a module file, and right\n');
     expect(stderr).toMatch(
       /bad\.yaml:3:34: rated\.current: found the bare number 4; a current needs its unit: 4 A, 400 mA/,
+    );
+    expect(status).toBe(65);
+  });
+
+  it('says that a driver is for another role', async () => {
+    const { readFileSync } = await import('node:fs');
+    const bench = join(folder, 'role.yaml');
+    const text = readFileSync('fixtures/benches/nursery.yaml', 'utf8');
+    writeFileSync(bench, text.replace('load-input-scpi', 'meter-read-scpi'));
+    const { status, stderr } = await railproof('check', bench);
+    expect(stderr).toMatch(
+      /role\.yaml: instruments\.load: meter-read-scpi is a driver for a meter, not for a load/,
     );
     expect(status).toBe(65);
   });

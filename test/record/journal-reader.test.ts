@@ -186,11 +186,11 @@ describe('a journal of any bytes', () => {
       '{"t":"soon","event":"notice","text":""}',
       '{"t":0.1,"event":"prune","tree":"pear"}',
       '{"t":0.1,"event":"toString"}',
-      '{"t":0.1,"event":"opened","format":"railproof/journal 1","wallClock":"again"}',
+      '{"t":0.1,"event":"opened","format":"railproof/journal 1","wallClock":"again","header":""}',
     ]) {
-      const first = JSON.stringify({ t: 0, ...opened });
+      const first = sealLine(newSealer(), JSON.stringify({ t: 0, ...opened }));
       const before = newSealer().update(`${first}\n${strange}\n`);
-      const last = sealLine(before, '{"t":1,"event":"ended","how":"completed","reason":null}');
+      const last = sealLine(before, '{"t":1,"event":"ended","how":"completed","reason":null,"status":0}');
       const path = journalOf([first, strange, last]);
       expect(checkJournal(path).kind).toBe('whole');
       expect(readBack(path)).toMatchObject({
@@ -239,7 +239,7 @@ describe('a long journal', () => {
     const path = place(`long-${count}.jsonl`);
     const file = openSync(path, 'w');
     const hash = newSealer();
-    let batch = `${JSON.stringify({ t: 0, ...opened })}\n`;
+    let batch = `${sealLine(newSealer(), JSON.stringify({ t: 0, ...opened }))}\n`;
     for (let index = 1; index < count; index += 1) {
       const t = index / 100;
       if (index % 30 === 0) {

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { simulatedOperator } from '../../src/cli/simulated-operator.js';
 import { exactInstruments } from '../bench/nursery-bench.js';
 import { stage } from './one-step.js';
 
@@ -24,10 +25,18 @@ describe('the load ramp', () => {
       const { perform, the, simulation } = await stage({
         file,
         simulation: { instruments: exactInstruments },
+        operator: (bench) => simulatedOperator(bench.simulation),
       });
       await perform('load-ramp', { from: '4 A', to: '8 A', points: 9, dwell: '300 ms', readings: 3 });
-      expect(the('point-began').map(({ set }) => set.current)).toEqual([4, 4.5, 5, 5.5]);
-      expect(the('point-ended').map(({ outcome }) => outcome)).toEqual(['held', 'held', 'held', 'dropped']);
+      const [ramp, recovery] = [the('point-began').slice(0, 4), the('point-began').slice(4)];
+      expect(ramp.map(({ set }) => set.current)).toEqual([4, 4.5, 5, 5.5]);
+      expect(recovery.map(({ phase }) => phase)).toContain('recovery');
+      expect(
+        the('point-ended')
+          .slice(0, 4)
+          .map(({ outcome }) => outcome),
+      ).toEqual(['held', 'held', 'held', 'dropped']);
+      expect(the('recovery').at(-1)?.outcome).toMatch(/^came-back/);
       expect(the('notice').map(({ text }) => text)).toEqual([
         'the module did not hold this point; the ramp ends here',
       ]);
@@ -46,7 +55,8 @@ describe('the load ramp', () => {
     });
     await perform('load-ramp', { to: '4 A', points: 9, readings: 2, sag: '5 %' });
     // 5 % of 15.21 V over 0.3 Ω is 2.5 A.
-    expect(the('point-began').map(({ set }) => set.current)).toEqual([0, 0.5, 1, 1.5, 2, 2.5, 3]);
+    const ramp = the('point-began').filter(({ phase }) => phase === 'ramp');
+    expect(ramp.map(({ set }) => set.current)).toEqual([0, 0.5, 1, 1.5, 2, 2.5, 3]);
   });
 
   it('asks the load for no more power than the bench allows at the voltage that was measured', async () => {

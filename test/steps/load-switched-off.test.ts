@@ -113,11 +113,15 @@ describe('a load that lets go as the voltage of the module goes', () => {
 
   it('is noted, and the dropout is the module’s: the ramp ends there', async () => {
     const bench = await withLockout('nursery-latch-off');
-    await bench.perform('load-ramp', { from: '5 A', to: '6 A', points: 3 });
-    expect(outcomesOf(bench)).toEqual(['held', 'dropped']);
+    // Nobody is there to cycle the input of the latched module, so the run can't go on after it.
+    await expect(bench.perform('load-ramp', { from: '5 A', to: '6 A', points: 3 })).rejects.toMatchObject({
+      code: 'MODULE_STAYS_OFF',
+    });
+    expect(outcomesOf(bench).slice(0, 2)).toEqual(['held', 'dropped']);
     expect(bench.the('notice').map(({ text }) => text)).toEqual([
       "the module's voltage is gone and the load has switched its input off: taken for a dropout of the module",
       'the module did not hold this point; the ramp ends here',
+      'the module has latched off and nobody is here to cycle its input',
     ]);
   });
 

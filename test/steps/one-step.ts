@@ -88,6 +88,7 @@ export async function stage(change: StageChange = {}): Promise<Stage> {
         signal: change.signal ?? new AbortController().signal,
         operator: operator ?? nobody,
         known,
+        tried: {},
         show: (progress) => shown.push(progress),
       });
     },

@@ -253,6 +253,29 @@ describe('a record survives what happens to it', () => {
     expect(strict.stderr.trimEnd().split('\n')).toHaveLength(1);
   });
 
+  it('what was planned can not be changed afterwards unnoticed', async () => {
+    const into = join(folder, 'forged');
+    await run({ runs: into });
+    const forged = join(into, readdirSync(into)[0] ?? '');
+    expect((await railproof(['analyse', forged, '--strict'])).status).toBe(0);
+    const header = join(forged, 'run.json');
+    writeFileSync(header, readFileSync(header, 'utf8').replace('"current": 4,', '"current": 9,'));
+    const { stdout } = await railproof(['analyse', forged]);
+    expect(stdout).toContain(
+      'DAMAGED RECORD: line 1 of the journal: it does not begin with the run.json that is here now',
+    );
+    expect((await railproof(['analyse', forged, '--strict'])).status).toBe(65);
+  });
+
+  it.skipIf(process.platform !== 'linux')(
+    'a folder where none can be made is refused, not waited for',
+    async () => {
+      const { status, stderr } = await run({ runs: '/proc/railproof' });
+      expect(stderr).toMatch(/\/proc\/railproof.* can't be written/);
+      expect(status).toBe(74);
+    },
+  );
+
   it("a folder that can't be written is said before anything is energised", async () => {
     const blocked = file('a-file', 'not a folder');
     const { status, stderr, stdout } = await run({ runs: join(blocked, 'runs') });

@@ -1,4 +1,14 @@
-import { mkdtempSync, readFileSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
+import { spawn } from 'node:child_process';
+import {
+  closeSync,
+  existsSync,
+  mkdtempSync,
+  openSync,
+  readFileSync,
+  readdirSync,
+  rmSync,
+  writeFileSync,
+} from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { connect } from 'node:net';
@@ -138,3 +148,17 @@ async function energised(runs: string): Promise<void> {
     await new Promise((resolve) => setTimeout(resolve, 20));
   }
 }
+
+it.skipIf(!existsSync('/dev/full'))('a result that can not be printed is no success', async () => {
+  const full = openSync('/dev/full', 'w');
+  try {
+    const child = spawn(process.execPath, ['dist/cli/main.js', 'drivers'], {
+      stdio: ['ignore', full, 'pipe'],
+    });
+    const { status, stderr } = await ended(child);
+    expect(stderr).toMatch(/the result could not be printed: .*ENOSPC/);
+    expect(status).toBe(74);
+  } finally {
+    closeSync(full);
+  }
+});
