@@ -20,6 +20,8 @@ export interface Evidence {
   readonly ended: Ended | undefined;
   readonly tripped: GuardTripped | undefined;
   readonly readings: number;
+  /** The last that was heard of the load's input; undefined when nothing was. */
+  readonly input: 'on' | 'off' | undefined;
 }
 
 export interface StepEvidence {
@@ -61,6 +63,7 @@ export class EvidenceCollector {
   #ended: Ended | undefined;
   #tripped: GuardTripped | undefined;
   #readings = 0;
+  #input: 'on' | 'off' | undefined;
 
   constructor(header: RunHeader) {
     this.#header = header;
@@ -102,13 +105,15 @@ export class EvidenceCollector {
       case 'guard-tripped':
         this.#tripped ??= event;
         return;
+      case 'input':
+        this.#input = event.confirmed ? event.state : 'on';
+        return;
       case 'ended':
         this.#ended = event;
         return;
       case 'opened':
       case 'instrument':
       case 'caution':
-      case 'input':
       case 'prompt':
       case 'notice':
       case 'step-ended':
@@ -123,6 +128,7 @@ export class EvidenceCollector {
       ended: this.#ended,
       tripped: this.#tripped,
       readings: this.#readings,
+      input: this.#input,
     };
   }
 

@@ -29,7 +29,10 @@ export function limitStyleFindings(
   const { dropout, openCircuit, droop = 0 } = found;
   if (dropout === undefined || openCircuit === undefined) return [];
   for (const step of stepsOf(evidence, 'dropout-search')) {
-    const watched = step.points.filter((point) => point.phase === 'overload').map(overloadOf);
+    // One without an outcome was broken off: what ended it may be what its samples show.
+    const watched = step.points
+      .filter(({ phase, outcome }) => phase === 'overload' && outcome !== undefined)
+      .map(overloadOf);
     const overload = watched.find(({ samples }) => samples.length >= fewestSamples);
     if (overload === undefined) continue;
     const { style, because } = styleOf(step, overload, { dropout, openCircuit, droop });

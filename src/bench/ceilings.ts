@@ -1,5 +1,4 @@
-import type { Bench } from '../files/bench.js';
-import type { Driver } from '../files/driver.js';
+import type { Bench, BenchDrivers } from '../files/bench.js';
 
 /** What may never be exceeded on this bench, and who says so. */
 export interface Ceilings {
@@ -33,10 +32,7 @@ const ofRatedCurrent = 0.95;
  * The strictest of the bench's limits and the ratings of the instruments that carry the quantity; the load's
  * rated current counts less 5 %.
  */
-export function ceilingsOf(
-  bench: Bench,
-  drivers: { readonly load: Driver; readonly meter?: Driver | undefined },
-): Ceilings {
+export function ceilingsOf(bench: Bench, drivers: BenchDrivers): Ceilings {
   const { load, meter } = drivers;
   return {
     voltage: strictest(

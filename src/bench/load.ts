@@ -1,5 +1,4 @@
 import type { Instrument } from '../instrument/instrument.js';
-import { InstrumentComplainedError } from '../instrument/instrument-errors.js';
 import type { Measurement } from '../instrument/scpi-number.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Volts } from '../quantity/quantity.js';
@@ -87,10 +86,14 @@ export class Load {
    * @throws DisobeyedError when the load says that its input is still on.
    */
   async makeSafe(): Promise<void> {
-    await this.instrument.perform('make-safe').catch((error: unknown) => {
-      if (!(error instanceof InstrumentComplainedError)) throw error;
-    });
-    const confirmed = !(await this.isOn());
+    // What its input says decides, whatever it said, or did not say, of how it was told.
+    const complaint: unknown = await this.instrument.perform('make-safe').then(
+      () => undefined,
+      (error: unknown) => error,
+    );
+    const confirmed = !(await this.isOn().catch((error: unknown) => {
+      throw complaint ?? error;
+    }));
     this.#onInput('off', confirmed);
     if (!confirmed) throw new DisobeyedError(this.address, 'was made safe and says that its input is on');
   }

@@ -1,5 +1,5 @@
 import type { Clock } from '../clock/clock.js';
-import type { Bench } from '../files/bench.js';
+import type { Bench, BenchDrivers } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
 import type { Connect } from '../instrument/connect.js';
 import { Instrument, type InstrumentParts } from '../instrument/instrument.js';
@@ -12,7 +12,7 @@ import type { Taken } from './sample.js';
 
 export interface BenchParts {
   readonly bench: Bench;
-  readonly drivers: { readonly load: Driver; readonly meter?: Driver | undefined };
+  readonly drivers: BenchDrivers;
   readonly connect: Connect;
   readonly clock: Clock;
   readonly onInput: InputListener;

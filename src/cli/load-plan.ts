@@ -7,13 +7,13 @@ import type { Procedure } from '../files/procedure.js';
 import type { FileRead } from '../files/read-text.js';
 import { makePlan, type Plan } from '../run/plan.js';
 import { stepKinds } from '../steps/index.js';
-import { planDrivers, readBenchDrivers, shipped, type BenchDrivers, vocabulary } from './wiring.js';
+import { planDrivers, readBenchDrivers, shipped, type DriverFiles, vocabulary } from './wiring.js';
 
 export interface PlanFiles {
   readonly procedure: FileRead<Procedure>;
   readonly bench: FileRead<Bench>;
   readonly modules: readonly [FileRead<Module>, ...FileRead<Module>[]];
-  readonly drivers: BenchDrivers;
+  readonly drivers: DriverFiles;
 }
 
 export interface LoadedPlan {

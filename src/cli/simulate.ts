@@ -15,10 +15,9 @@ export async function simulate(
   streams: Streams,
 ): Promise<ExitCode> {
   const file = await readBench(wanted.bench);
-  const { load, meter } = planDrivers(await readBenchDrivers(file));
   const served = await serveBench({
     bench: file.value,
-    drivers: { load, ...(meter === undefined ? {} : { meter }) },
+    drivers: planDrivers(await readBenchDrivers(file)),
     clock: realClock,
     lines: wanted.pty === true ? 'pty' : 'tcp',
   });

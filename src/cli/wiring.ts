@@ -5,12 +5,11 @@ import type { Clock } from '../clock/clock.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { realClock } from '../clock/real-clock.js';
 import { VirtualClock } from '../clock/virtual-clock.js';
-import type { Bench } from '../files/bench.js';
+import type { Bench, BenchDrivers } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
 import { readDriver } from '../files/read-driver.js';
 import type { FileRead } from '../files/read-text.js';
 import { type Connect, connectorFor } from '../instrument/connect.js';
-import type { PlanDrivers } from '../run/plan.js';
 import { stepKinds } from '../steps/index.js';
 import type { OpenedSimulation } from '../simulation/open-simulation.js';
 
@@ -31,7 +30,7 @@ export function recordedPath(path: string): string {
 
 export const vocabulary = { stepKinds, findings: findingNames };
 
-export interface BenchDrivers {
+export interface DriverFiles {
   readonly load: FileRead<Driver>;
   readonly meter?: FileRead<Driver>;
 }
@@ -55,7 +54,7 @@ export class WrongRoleError extends RailproofError {
  * The drivers that a bench names, shipped or beside the bench file, each for the role it is given.
  * @throws BadFileError, MissingFileError, NotShippedError, WrongRoleError
  */
-export async function readBenchDrivers(bench: FileRead<Bench>): Promise<BenchDrivers> {
+export async function readBenchDrivers(bench: FileRead<Bench>): Promise<DriverFiles> {
   const where = { relativeTo: dirname(bench.path), shipped: shipped.drivers };
   const read = async (role: keyof Bench['instruments'], name: string): Promise<FileRead<Driver>> => {
     const driver = await readDriver(name, where);
@@ -69,8 +68,9 @@ export async function readBenchDrivers(bench: FileRead<Bench>): Promise<BenchDri
   };
 }
 
-export function planDrivers(drivers: BenchDrivers): PlanDrivers {
-  return { load: drivers.load.value, ...(drivers.meter === undefined ? {} : { meter: drivers.meter.value }) };
+/** What was read of them, without where it stood. */
+export function planDrivers({ load, meter }: DriverFiles): BenchDrivers {
+  return { load: load.value, meter: meter?.value };
 }
 
 /** How a bench is reached, and the time that passes there. */
@@ -85,7 +85,7 @@ export interface World {
  * The ways to connect that a bench needs, each loaded only when it is used. Where every instrument is
  * simulated or replayed, time is virtual: an hour passes in a moment.
  */
-export async function worldOf(bench: Bench, drivers: PlanDrivers): Promise<World> {
+export async function worldOf(bench: Bench, drivers: BenchDrivers): Promise<World> {
   const kinds = Object.values(bench.instruments).map((place) => place.connection.kind);
   const clock = kinds.every((kind) => kind === 'simulated' || kind === 'replay')
     ? new VirtualClock(realClock.wall())
@@ -96,7 +96,7 @@ export async function worldOf(bench: Bench, drivers: PlanDrivers): Promise<World
       : (await import('../simulation/open-simulation.js')).openSimulation({
           simulation: bench.simulation,
           clock,
-          drivers: { load: drivers.load, ...(drivers.meter === undefined ? {} : { meter: drivers.meter }) },
+          drivers,
         });
   return { connect: connectors(clock, simulation), clock, simulation };
 }

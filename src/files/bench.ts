@@ -1,4 +1,5 @@
 import type { Amperes, Ohms, Volts, Watts } from '../quantity/quantity.js';
+import type { Driver } from './driver.js';
 import type { Simulation } from './simulation-section.js';
 
 /** A bench file: the instruments, leads and hard limits of one work place. */
@@ -16,6 +17,12 @@ export interface Bench {
   };
   /** What is really there, on a bench with simulated instruments. */
   readonly simulation?: Simulation;
+}
+
+/** The driver of each instrument of a bench. */
+export interface BenchDrivers {
+  readonly load: Driver;
+  readonly meter?: Driver | undefined;
 }
 
 export interface InstrumentPlace {

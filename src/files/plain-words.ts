@@ -40,10 +40,14 @@ export function found(value: unknown): string {
   return Array.isArray(value) ? 'found a list' : 'found a map';
 }
 
+/** Between shorter words one letter makes another word, and a guess the opposite of what was meant: AC, DC. */
+const shortestGuessed = 4;
+
 /** A word that is none of the ones allowed here. */
 export function notAmong(value: unknown, allowed: readonly string[]): string {
   const choice = allowed.length === 1 ? `'${allowed[0] ?? ''}'` : `one of ${allowed.join(', ')}`;
-  const guess = typeof value === 'string' ? didYouMean(value, allowed) : '';
+  const guess =
+    typeof value === 'string' && value.length >= shortestGuessed ? didYouMean(value, allowed) : '';
   return `${found(value)}${guess === '' ? `; ${choice} is needed` : guess}`;
 }
 

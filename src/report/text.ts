@@ -59,6 +59,8 @@ function warnings(result: Result, style: Style): string[] {
   }
   if (how === 'cut-off' && integrity.kind !== 'damaged')
     lines.push('CUT OFF: the record ends without an end; what follows is what is whole.');
+  if (how === 'cut-off' && result.evidence.input === 'on')
+    lines.push('THE LOAD WAS ON when the record broke off: `railproof safe --bench <file>` switches it off.');
   if (how === 'stopped') lines.push(`STOPPED: ${reason ?? ''}`);
   if (how === 'failed') lines.push(`FAILED: ${reason ?? ''}`);
   return lines.map((line) => style.warn(line));

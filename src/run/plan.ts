@@ -1,7 +1,6 @@
 import { type Ceilings, ceilingsOf } from '../bench/ceilings.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
-import type { Bench } from '../files/bench.js';
-import type { Driver } from '../files/driver.js';
+import type { Bench, BenchDrivers } from '../files/bench.js';
 import type { Module } from '../files/module.js';
 import type { CautionName, Procedure, ProcedureStep } from '../files/procedure.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
@@ -16,7 +15,7 @@ export interface Plan {
   readonly bench: Bench;
   readonly modules: readonly Module[];
   readonly module: Module;
-  readonly drivers: PlanDrivers;
+  readonly drivers: BenchDrivers;
   readonly ceilings: Ceilings;
   readonly steps: readonly PlanStep[];
   /** What must be acknowledged before anything is switched on. */
@@ -24,11 +23,6 @@ export interface Plan {
   readonly duration: Seconds;
   /** What refers to the nameplate. */
   readonly known: Known;
-}
-
-export interface PlanDrivers {
-  readonly load: Driver;
-  readonly meter?: Driver | undefined;
 }
 
 export interface PlanStep {
@@ -66,7 +60,7 @@ export function makePlan(
   procedure: Procedure,
   modules: readonly [Module, ...Module[]],
   bench: Bench,
-  drivers: PlanDrivers,
+  drivers: BenchDrivers,
   stepKinds: readonly StepKind[],
 ): Plan {
   const [module, ...others] = modules;

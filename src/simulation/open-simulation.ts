@@ -1,4 +1,5 @@
 import type { Clock } from '../clock/clock.js';
+import type { BenchDrivers } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
 import type { Simulation, SimulatedModule } from '../files/simulation-section.js';
 import type { Connection } from '../instrument/connection.js';
@@ -12,12 +13,6 @@ import { type SimulatedOperator, simulatedOperator } from './simulated-operator.
 import { VirtualBench, type WorldFault } from './virtual-bench.js';
 import { VirtualInstrument } from './virtual-instrument.js';
 import { loadHardware } from './virtual-load.js';
-
-/** The drivers of the instruments that are simulated, by role. The load is what works the module. */
-export interface SimulatedDrivers {
-  readonly load: Driver;
-  readonly meter?: Driver;
-}
 
 export interface OpenedSimulation {
   /** What is really there. For tests and demonstrations: a run sees only what the lines carry. */
@@ -42,7 +37,7 @@ export interface OpenedSimulation {
 export function openSimulation(facts: {
   readonly simulation: Simulation;
   readonly clock: Clock;
-  readonly drivers: SimulatedDrivers;
+  readonly drivers: BenchDrivers;
 }): OpenedSimulation {
   const { simulation, clock, drivers } = facts;
   const random = randomFrom(simulation.seed);

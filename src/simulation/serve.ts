@@ -2,15 +2,15 @@ import { mkdtemp, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import type { Clock } from '../clock/clock.js';
-import type { Bench } from '../files/bench.js';
+import type { Bench, BenchDrivers } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
-import { type SimulatedDrivers, openSimulation } from './open-simulation.js';
+import { openSimulation } from './open-simulation.js';
 import { serveOnPty } from './serve-pty.js';
 import { LOOPBACK, serveOnTcp } from './serve-tcp.js';
 import { CannotSimulateError } from './simulation-errors.js';
 import type { VirtualBench } from './virtual-bench.js';
 
-export type ServedRole = keyof SimulatedDrivers;
+export type ServedRole = keyof BenchDrivers;
 
 export interface ServedBench {
   /** As a bench file writes them: `tcp://127.0.0.1:5025`, `serial:/tmp/…/load?baud=115200`. */
@@ -21,7 +21,7 @@ export interface ServedBench {
 
 export interface ServeOptions {
   readonly bench: Bench;
-  readonly drivers: SimulatedDrivers;
+  readonly drivers: BenchDrivers;
   /** Must keep real time: others wait on the other end of the line. */
   readonly clock: Clock;
   /** `pty` needs socat. TCP when left out. */
@@ -53,7 +53,8 @@ export async function serveBench(options: ServeOptions): Promise<ServedBench> {
   };
   try {
     const folder = options.lines === 'pty' ? await temporaryFolder(closings) : undefined;
-    for (const [role, driver] of Object.entries(drivers) as [ServedRole, Driver][]) {
+    for (const [role, driver] of Object.entries(drivers) as [ServedRole, Driver | undefined][]) {
+      if (driver === undefined) continue;
       const instrument = opened.instrument(role, driver, dialectIn(bench, role));
       const served = await serveOnTcp({ instrument, clock, began: opened.began, port: ports[role] ?? 0 });
       closings.push(() => served.close());

@@ -71,6 +71,7 @@ describe('one mistake is one line, at its place', () => {
     [rated, 'rated: [15 V, 4 A]', '4:8: rated: found a list; a map of keys is needed'],
     [rated, '', '1:1: rated: missing; a map of keys is needed'],
     ['input: mains', 'input: mans', "6:8: input: found 'mans'; did you mean 'mains'?"],
+    ['input: mains', 'input: ac', "6:8: input: found 'ac'; one of mains, dc is needed"],
     ['input: mains', 'input: battery', "6:8: input: found 'battery'; one of mains, dc is needed"],
     ['class: I ', 'class: 1 ', '5:19: protection-class: found the number 1; one of I, II is needed'],
     ['unknown', 'unkown', "7:19: output-isolation: found 'unkown'; did you mean 'unknown'?"],
