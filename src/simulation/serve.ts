@@ -13,7 +13,7 @@ import type { VirtualBench } from './virtual-bench.js';
 export type ServedRole = keyof BenchDrivers;
 
 export interface ServedBench {
-  /** As a bench file writes them: `tcp://127.0.0.1:5025`, `serial:/tmp/…/load?baud=115200`. */
+  /** As a bench file writes them: `tcp://127.0.0.1:5025`, `serial:<link>?baud=115200`. */
   readonly addresses: Readonly<Partial<Record<ServedRole, string>>>;
   readonly world: VirtualBench;
   close(): Promise<void>;
