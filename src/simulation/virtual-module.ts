@@ -4,6 +4,7 @@ import { operatingPoints } from '../circuit/operating-point.js';
 import type { SimulatedModule } from '../files/simulation-section.js';
 import type { Kelvins, Seconds, Volts } from '../quantity/quantity.js';
 import { curveOf, leastHeldVoltage, startingCurveOf } from './module-curve-of.js';
+import { firstFailing } from './first-failing.js';
 import { ATTEMPT_SHARE, SHUTDOWN_PERIOD, attemptBegins, attempting, nextAttempt } from './retry.js';
 import { riseAfter, steadyRise } from './warming.js';
 
@@ -240,16 +241,4 @@ function overloaded(module: SimulatedModule, at: Seconds): ModulePhase {
 
 function periodOf(module: SimulatedModule): Seconds {
   return module.limit.style === 'hiccup' ? module.limit.period : SHUTDOWN_PERIOD;
-}
-
-/** The end of a bisection is the first moment found at which it no longer holds, so that time goes on. */
-function firstFailing(holds: (at: Seconds) => boolean, from: Seconds, to: Seconds): Seconds {
-  let good = from;
-  let bad = to;
-  for (let halving = 0; halving < 60 && bad - good > 1e-6; halving++) {
-    const middle = (good + bad) / 2;
-    if (holds(middle)) good = middle;
-    else bad = middle;
-  }
-  return bad;
 }
