@@ -1,6 +1,8 @@
 import { closeSync, fdatasyncSync, ftruncateSync, openSync, writeSync } from 'node:fs';
+import { dirname } from 'node:path';
 import type { Hash } from 'node:crypto';
 import type { Seconds } from '../quantity/quantity.js';
+import { flushFolder } from './flush-folder.js';
 import { sealedEvents, type JournalEvent } from './journal-event.js';
 import { RecordWriteError } from './record-error.js';
 import { newSealer, sealLine } from './seal.js';
@@ -27,6 +29,7 @@ export class JournalWriter {
     this.#began = now();
     try {
       this.#file = openSync(path, 'ax');
+      flushFolder(dirname(path));
     } catch (cause) {
       throw new RecordWriteError(path, cause);
     }

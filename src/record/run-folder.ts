@@ -12,6 +12,7 @@ import {
 } from 'node:fs';
 import { basename, dirname, join } from 'node:path';
 import { RailproofError } from '../errors/railproof-error.js';
+import { flushFolder } from './flush-folder.js';
 import { RecordWriteError } from './record-error.js';
 import type { RunHeader } from './run-header.js';
 
@@ -51,6 +52,7 @@ export function makeRunFolder(runs: string, began: Date, module: string, procedu
     const path = attempt === 1 ? wanted : `${wanted}-${attempt}`;
     try {
       mkdirSync(path);
+      flushFolder(runs);
       return runFolderAt(path);
     } catch (cause) {
       if ((cause as NodeJS.ErrnoException).code !== 'EEXIST' || attempt > 999)
@@ -87,27 +89,9 @@ export function writeHeader(folder: RunFolder, header: RunHeader): string {
     } finally {
       closeSync(file);
     }
-    flushFolder(folder.path);
     return createHash('sha256').update(text).digest('hex');
   } catch (cause) {
     throw new RecordWriteError(path, cause);
-  }
-}
-
-/** A file survives a power cut only when its name in the folder does. Where folders can't be flushed, none need be. */
-export function flushFolder(path: string): void {
-  let folder: number;
-  try {
-    folder = openSync(path, 'r');
-  } catch {
-    return;
-  }
-  try {
-    fsyncSync(folder);
-  } catch {
-    // Some systems refuse it; they keep names by other means.
-  } finally {
-    closeSync(folder);
   }
 }
 
