@@ -13,8 +13,9 @@ export async function check(files: readonly string[], streams: Streams): Promise
   for (const path of files) {
     try {
       const file = await readAnyFile(path, vocabulary);
-      if (file.kind === 'bench') await readBenchDrivers(file.read);
-      streams.stdout.write(`${path}: a ${file.kind} file, and right\n`);
+      const { kind, content } = file.value;
+      if (kind === 'bench') await readBenchDrivers({ ...file, value: content });
+      streams.stdout.write(`${path}: a ${kind} file, and right\n`);
     } catch (error) {
       if (!(error instanceof RailproofError)) throw error;
       streams.stderr.write(`${errorText(error)}\n`);

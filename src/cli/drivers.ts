@@ -1,11 +1,10 @@
-import { readdir } from 'node:fs/promises';
-import { join } from 'node:path';
 import { loadMayStillBeOn } from '../bench/make-safe.js';
 import { realClock } from '../clock/real-clock.js';
 import { exitCodeOf, exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
 import { parseAddress } from '../files/connection-address.js';
 import type { Driver } from '../files/driver.js';
 import { readDriver } from '../files/read-driver.js';
+import { shippedNames } from '../files/shipped-file.js';
 import { tryDriver, type TrialResult } from '../instrument/trial.js';
 import { visible } from '../instrument/visible.js';
 import { jsonText } from '../report/json-text.js';
@@ -27,6 +26,8 @@ export class TrialUsageError extends RailproofError {
   }
 }
 
+const shelves = { relativeTo: '.', shipped: shipped.drivers };
+
 interface Wanted {
   readonly try?: string;
   readonly connection?: string;
@@ -42,13 +43,8 @@ export async function drivers(wanted: Wanted, streams: Streams): Promise<ExitCod
 }
 
 async function list(json: boolean, streams: Streams): Promise<ExitCode> {
-  const names = (await readdir(shipped.drivers)).filter((name) => name.endsWith('.yaml')).sort();
-  const found = await Promise.all(
-    names.map(
-      async (name) =>
-        (await readDriver(join(shipped.drivers, name), { relativeTo: '.', shipped: shipped.drivers })).value,
-    ),
-  );
+  const names = await shippedNames(shipped.drivers);
+  const found = await Promise.all(names.map(async (name) => (await readDriver(name, shelves)).value));
   if (json) {
     const listed = found.map(({ name, role, summary }) => ({ name, role, summary }));
     streams.stdout.write(jsonText({ format: 'railproof/drivers 1', drivers: listed }));
@@ -60,7 +56,7 @@ async function list(json: boolean, streams: Streams): Promise<ExitCode> {
 }
 
 async function tryOut(name: string, address: string, json: boolean, streams: Streams): Promise<ExitCode> {
-  const { value: driver } = await readDriver(name, { relativeTo: '.', shipped: shipped.drivers });
+  const { value: driver } = await readDriver(name, shelves);
   const connection = await connectors(realClock)(parseAddress(address), driver, driver.role);
   const results: TrialResult[] = [];
   const stop = stopOnSignals(streams);

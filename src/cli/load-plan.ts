@@ -34,7 +34,6 @@ export async function loadPlan(wanted: {
   const drivers = await readBenchDrivers(bench);
   const [first, ...others] = await Promise.all(wanted.modules.map((path) => readModule(path)));
   if (first === undefined) throw new Error('a run has at least one module');
-  const modules = [first, ...others] as const;
   const procedure = await readProcedure(wanted.procedure, vocabulary, {
     relativeTo: '.',
     shipped: shipped.procedures,
@@ -46,5 +45,5 @@ export async function loadPlan(wanted: {
     planDrivers(drivers),
     stepKinds,
   );
-  return { plan, files: { procedure, bench, modules: [...modules], drivers } };
+  return { plan, files: { procedure, bench, modules: [first, ...others], drivers } };
 }

@@ -10,26 +10,29 @@ import { parseProcedure } from './read-procedure.js';
 import { readAndParse, type FileRead } from './read-text.js';
 import type { Vocabulary } from './vocabulary.js';
 
+/** A user's file of whatever kind. */
 export type AnyFile =
-  | { readonly kind: 'module'; readonly read: FileRead<Module> }
-  | { readonly kind: 'bench'; readonly read: FileRead<Bench> }
-  | { readonly kind: 'driver'; readonly read: FileRead<Driver> }
-  | { readonly kind: 'procedure'; readonly read: FileRead<Procedure> };
+  | { readonly kind: 'module'; readonly content: Module }
+  | { readonly kind: 'bench'; readonly content: Bench }
+  | { readonly kind: 'driver'; readonly content: Driver }
+  | { readonly kind: 'procedure'; readonly content: Procedure };
 
 /**
  * Reads a file as what its first line says it is.
  * @throws BadFileError, MissingFileError
  */
-export async function readAnyFile(path: string, vocabulary: Vocabulary): Promise<AnyFile> {
-  const { value: kind } = await readAndParse(path, fileKindOf);
-  switch (kind) {
-    case 'module':
-      return { kind, read: await readAndParse(path, parseModule) };
-    case 'bench':
-      return { kind, read: await readAndParse(path, parseBench) };
-    case 'driver':
-      return { kind, read: await readAndParse(path, parseDriver) };
-    case 'procedure':
-      return { kind, read: await readAndParse(path, (text, name) => parseProcedure(text, name, vocabulary)) };
-  }
+export function readAnyFile(path: string, vocabulary: Vocabulary): Promise<FileRead<AnyFile>> {
+  return readAndParse(path, (text, fileName): AnyFile => {
+    const kind = fileKindOf(text, fileName);
+    switch (kind) {
+      case 'module':
+        return { kind, content: parseModule(text, fileName) };
+      case 'bench':
+        return { kind, content: parseBench(text, fileName) };
+      case 'driver':
+        return { kind, content: parseDriver(text, fileName) };
+      case 'procedure':
+        return { kind, content: parseProcedure(text, fileName, vocabulary) };
+    }
+  });
 }
