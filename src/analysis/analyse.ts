@@ -2,7 +2,7 @@ import { answerFindings } from './answers.js';
 import { heldPoints, stepsOf } from './curve.js';
 import { dropoutBracket, dropoutFindings } from './dropout.js';
 import type { Evidence } from './evidence.js';
-import type { Finding } from './finding.js';
+import { type Finding, findingNamed } from './finding.js';
 import { leadFindings } from './lead-resistance.js';
 import { limitStyleFindings } from './limit-style.js';
 import { findKnee, onsetFindings } from './onset.js';
@@ -56,6 +56,6 @@ export function analyse(evidence: Evidence): readonly Finding[] {
 }
 
 function numberNamed(name: string, findings: readonly Finding[]): number | undefined {
-  const value = findings.find((finding) => finding.name === name)?.value;
+  const value = findingNamed(findings, name)?.value;
   return typeof value === 'number' ? value : undefined;
 }

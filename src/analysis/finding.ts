@@ -28,6 +28,11 @@ export interface Factor {
   readonly reason: string;
 }
 
+/** The finding of that name; undefined where it was not made. */
+export function findingNamed(findings: readonly Finding[], name: string): Finding | undefined {
+  return findings.find((finding) => finding.name === name);
+}
+
 interface Circumstances {
   readonly step: number | null;
   readonly note?: string;

@@ -9,8 +9,9 @@ const reasons = {
 } as const;
 
 /**
- * Turns the wish to end the program, and anything that breaks outside a step, into a run that ends safely: the step is left, the bench is made safe,
- * the record is closed. Asking again changes nothing, as that is already the quickest safe way out.
+ * Turns the wish to end the program, and anything that breaks outside a step, into a run that ends safely:
+ * the step is left, the bench is made safe, the record is closed. Asking again changes nothing, as that is
+ * already the quickest safe way out.
  */
 export function stopOnSignals(streams: Streams): { readonly signal: AbortSignal; release(): void } {
   const controller = new AbortController();

@@ -24,7 +24,10 @@ export class OutputLostError extends RailproofError {
 /** A reader that goes away of its own will (`| head`, a closed terminal) has seen enough. */
 const readerLeft: ReadonlySet<string | undefined> = new Set(['EPIPE', 'EIO', 'ERR_STREAM_DESTROYED']);
 
-/** The streams of this process, and what became of the output. A reader that goes away must not end a run that is not yet safe. */
+/**
+ * The streams of this process, and what became of the output. A reader that goes away must not end a run that
+ * is not yet safe.
+ */
 export function processStreams(): Streams & { readonly lost: () => Promise<OutputLostError | undefined> } {
   let lost: OutputLostError | undefined;
   process.stderr.on('error', () => undefined);

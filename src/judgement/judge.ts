@@ -1,4 +1,4 @@
-import { type Finding } from '../analysis/finding.js';
+import { type Finding, findingNamed } from '../analysis/finding.js';
 import type { RunHeader } from '../record/run-header.js';
 import { effectiveDegreesOfFreedom } from '../statistics/effective-freedom.js';
 import { decide } from '../statistics/guarded-decision.js';
@@ -23,7 +23,7 @@ export type Outcome = 'conforms' | 'does-not-conform' | 'undecided';
  */
 export function judge(header: RunHeader, findings: readonly Finding[]): readonly Decision[] {
   return header.criteria.map(({ finding: name, requirement }) => {
-    const finding = findings.find((one) => one.name === name);
+    const finding = findingNamed(findings, name);
     return requirement.kind === 'is'
       ? decideWord(name, requirement.word, finding)
       : decideQuantity(name, requirement.kind, limitOf(requirement.value, header, findings), finding);

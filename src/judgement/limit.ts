@@ -1,4 +1,4 @@
-import type { Finding } from '../analysis/finding.js';
+import { type Finding, findingNamed } from '../analysis/finding.js';
 import { dimensionOfFinding } from '../analysis/finding-names.js';
 import { formatQuantity, formatShare } from '../quantity/format-quantity.js';
 import {
@@ -34,7 +34,7 @@ export function limitOf(value: Written, header: RunHeader, findings: readonly Fi
   };
   const plate = nameplate[written.of];
   if (plate !== undefined) return { ...exactly, value: plate * written.ratio };
-  const whole = findings.find((finding) => finding.name === written.of);
+  const whole = findingNamed(findings, written.of);
   if (typeof whole?.value !== 'number') return { ...exactly, value: undefined };
   const ratio = Math.abs(written.ratio);
   return {

@@ -1,4 +1,4 @@
-import type { Finding } from '../analysis/finding.js';
+import { type Finding, findingNamed } from '../analysis/finding.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes } from '../quantity/quantity.js';
 import { inOneLine } from './finding-text.js';
@@ -6,7 +6,8 @@ import { endedHow, type Result } from './result.js';
 
 /** What the technician came for, in a few sentences, the first of which is what to do. Empty when nothing was found. */
 export function answer(result: Result): readonly string[] {
-  const { recommended, usable } = named(result.findings);
+  const recommended = findingNamed(result.findings, 'recommended-current');
+  const usable = findingNamed(result.findings, 'usable-current');
   if (recommended === undefined || usable === undefined) return [];
   const current = Number(recommended.value);
   const advice = current > 0 ? `load it continuously with up to ${roundedDown(current)}` : 'do not load it';
@@ -20,26 +21,15 @@ export function answer(result: Result): readonly string[] {
 
 /** Where it leaves regulation, where it drops out, and what it does there. */
 function limit(findings: readonly Finding[]): readonly string[] {
-  const { onset, dropout, style } = named(findings);
+  const onset = findingNamed(findings, 'limit-onset-current');
+  const dropout = findingNamed(findings, 'dropout-current');
+  const style = findingNamed(findings, 'limit-style');
   if (dropout === undefined) return [];
   const end = `drops out at ${inOneLine(dropout)}`;
   const way = style === undefined || style.value === 'undetermined' ? '' : ` (${String(style.value)})`;
   return onset === undefined
     ? [`It regulates until it ${end}${way}.`]
     : [`It leaves regulation at ${inOneLine(onset)} and ${end}${way}.`];
-}
-
-function named(
-  findings: readonly Finding[],
-): Readonly<Record<'recommended' | 'usable' | 'onset' | 'dropout' | 'style', Finding | undefined>> {
-  const find = (name: string): Finding | undefined => findings.find((finding) => finding.name === name);
-  return {
-    recommended: find('recommended-current'),
-    usable: find('usable-current'),
-    onset: find('limit-onset-current'),
-    dropout: find('dropout-current'),
-    style: find('limit-style'),
-  };
 }
 
 /** To three digits, and never up: a recommendation must not grow by being written. */

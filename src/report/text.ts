@@ -1,3 +1,4 @@
+import { findingNamed } from '../analysis/finding.js';
 import type { Decision } from '../judgement/judge.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import { alignTable } from './align.js';
@@ -94,8 +95,8 @@ function findingsTable({ findings }: Result, style: Style): string {
 }
 
 function derivation({ findings }: Result, style: Style): string {
-  const recommended = findings.find((finding) => finding.name === 'recommended-current');
-  const usable = findings.find((finding) => finding.name === 'usable-current');
+  const recommended = findingNamed(findings, 'recommended-current');
+  const usable = findingNamed(findings, 'usable-current');
   if (recommended === undefined || usable === undefined) return '';
   const amps = (value: number): string => formatQuantity(value, 'current', { significant: 4 });
   const rows = [

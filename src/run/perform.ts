@@ -7,7 +7,7 @@ import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { JournalEvent } from '../record/journal-event.js';
 import type { Operator } from '../steps/operator.js';
-import type { Progress } from '../steps/step-kind.js';
+import type { Progress, Tried } from '../steps/step-kind.js';
 import { cautionTexts } from './cautions.js';
 import type { Plan } from './plan.js';
 import { StoppedByOperator, UnforeseenError } from './stopped.js';
@@ -123,7 +123,7 @@ async function goThrough({
   watch,
 }: Performance): Promise<void> {
   const known = { ...plan.known };
-  const tried = {};
+  const tried: Tried = {};
   const limits = { ...plan.ceilings, ratedVoltage: plan.module.rated.voltage };
   for (const [index, planned] of plan.steps.entries()) {
     signal.throwIfAborted();

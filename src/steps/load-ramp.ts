@@ -4,12 +4,12 @@ import { formatShare } from '../quantity/format-quantity.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
 import { defineStep } from './define-step.js';
+import { longestDwell } from './dwell.js';
 import { holds } from './holding.js';
 import { openCircuitVoltage } from './known-voltage.js';
 import { Points } from './point.js';
 import { comeBack } from './recover.js';
 import { ModuleStaysOffError } from './step-error.js';
-import { longestDwell } from './dwell.js';
 
 const readingTime = 0.1;
 /** How long a module that did not hold a point may take to come back. */

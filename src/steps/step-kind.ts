@@ -50,7 +50,7 @@ export interface StepContext {
   readonly operator: Operator;
   /** The nameplate and what was measured so far. */
   readonly known: Known;
-  /** What the module was seen to hold and to drop so far, so that no step works it blindly. */
+  /** What a ramp saw the module hold and drop, so that a search does not begin above it. */
   readonly tried: Tried;
   readonly show: (progress: Progress) => void;
 }
