@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { QuantityError, readQuantityOrShare } from '../quantity/parse-quantity.js';
+import { QuantityError, readQuantityOrAnyShare } from '../quantity/parse-quantity.js';
 import type { Dimension } from '../quantity/quantity.js';
 import { shown } from '../quantity/shown-text.js';
 import { checkValue } from './check-value.js';
@@ -65,7 +65,7 @@ function readRequirement(
   }
   if (form === 'is') return `${finding} is a quantity; write at-least: or at-most: in place of is:`;
   try {
-    return { kind: form, value: readQuantityOrShare(value, dimension) };
+    return { kind: form, value: readQuantityOrAnyShare(value, dimension) };
   } catch (error) {
     if (error instanceof QuantityError) return error.message;
     throw error;
@@ -75,5 +75,9 @@ function readRequirement(
 function bound(description: string): z.ZodUnknown {
   return z
     .unknown()
-    .meta({ type: 'string', description, examples: ['4 A', '100 % of rated-current', '1 %'] });
+    .meta({
+      type: 'string',
+      description,
+      examples: ['4 A', '100 % of rated-current', '120 % of baseline', '1 %'],
+    });
 }

@@ -7,6 +7,7 @@ export const headers = {
   bench: 'bench 1',
   driver: 'driver 1',
   procedure: 'procedure 1',
+  tolerance: 'tolerance 1',
 } as const;
 
 export type FileKind = keyof typeof headers;

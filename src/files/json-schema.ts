@@ -5,13 +5,14 @@ import { driverSchema } from './driver-schema.js';
 import type { FileKind } from './file-kind.js';
 import { moduleSchema } from './module-schema.js';
 import { procedureSchema } from './procedure-schema.js';
+import { toleranceEntrySchema, toleranceSchema } from './tolerance-schema.js';
 import type { Vocabulary } from './vocabulary.js';
 
 export type JsonSchema = Readonly<Record<string, unknown>>;
 
 /**
  * What a file of this kind may hold, as a JSON Schema (draft 2020-12) by which an editor completes and
- * checks it. With a vocabulary, a procedure's steps and findings are spelled out.
+ * checks it. With a vocabulary, the steps and findings are spelled out.
  */
 export function jsonSchemaOf(kind: FileKind, vocabulary?: Vocabulary): JsonSchema {
   switch (kind) {
@@ -24,6 +25,10 @@ export function jsonSchemaOf(kind: FileKind, vocabulary?: Vocabulary): JsonSchem
     case 'procedure': {
       const schema = asWritten(procedureSchema);
       return vocabulary === undefined ? schema : spelledOut(schema, vocabulary);
+    }
+    case 'tolerance': {
+      const schema = asWritten(toleranceSchema);
+      return vocabulary === undefined ? schema : withEntries(schema, vocabulary);
     }
   }
 }
@@ -60,16 +65,42 @@ function stepSchema(kind: string, parameters: JsonSchema): JsonSchema {
 }
 
 function criterionOf(findings: readonly string[]): JsonSchema {
-  const schema = withoutDialect(asWritten(criterionSchema));
+  return ofOneFinding(withoutDialect(asWritten(criterionSchema)), nameOf(findings, ''), [
+    'at-least',
+    'at-most',
+    'is',
+  ]);
+}
+
+function withEntries(schema: JsonSchema, vocabulary: Vocabulary): JsonSchema {
   const properties = schema['properties'] as Readonly<Record<string, JsonSchema>>;
-  const names = findings.filter((finding) => !finding.endsWith('*'));
-  const families = findings.filter((finding) => finding.endsWith('*'));
-  const anyOf = [{ enum: names }, ...families.map((family) => ({ pattern: `^${family.slice(0, -1)}.` }))];
+  const items = ofOneFinding(
+    withoutDialect(asWritten(toleranceEntrySchema)),
+    nameOf(Object.keys(vocabulary.findings), '*'),
+    ['within', 'same', 'becomes'],
+  );
+  return { ...schema, properties: { ...properties, findings: { ...properties['findings'], items } } };
+}
+
+/** A map that names a finding and says exactly one thing of it. */
+function ofOneFinding(
+  schema: JsonSchema,
+  anyOf: readonly JsonSchema[],
+  forms: readonly string[],
+): JsonSchema {
+  const properties = schema['properties'] as Readonly<Record<string, JsonSchema>>;
   return {
     ...schema,
     properties: { ...properties, finding: { ...properties['finding'], anyOf } },
-    oneOf: [{ required: ['at-least'] }, { required: ['at-most'] }, { required: ['is'] }],
+    oneOf: forms.map((form) => ({ required: [form] })),
   };
+}
+
+/** The names of findings; `family` is what may stand for a whole family, besides the name of one of them. */
+function nameOf(findings: readonly string[], family: '' | '*'): readonly JsonSchema[] {
+  const names = findings.filter((finding) => family === '*' || !finding.endsWith('*'));
+  const families = findings.filter((finding) => finding.endsWith('*'));
+  return [{ enum: names }, ...families.map((each) => ({ pattern: `^${each.slice(0, -1)}.` }))];
 }
 
 function withoutDialect(schema: JsonSchema): JsonSchema {

@@ -1,8 +1,8 @@
 import { z } from 'zod';
-import { choice, line, name, paragraph, quantity } from './building-blocks.js';
-import { camelKeys } from './camel-keys.js';
+import { choice, line, name, paragraph } from './building-blocks.js';
+import { deratingSchema } from './derating-schema.js';
 import { headers } from './file-kind.js';
-import { cautions } from './procedure.js';
+import { cautions, circuits } from './procedure.js';
 
 /**
  * A procedure file but for its steps and criteria, which are lists here; their own rules depend on the
@@ -14,6 +14,12 @@ export const procedureSchema = z
     name: name('What the procedure is called; runs are filed under it.', ['real-limit']),
     title: line('What it does, as a headline.').min(1),
     purpose: paragraph('Why one would run it, in a few sentences.').default(''),
+    circuit: choice(circuits, 'How the modules under test are wired.').default('single'),
+    wiring: z
+      .array(line('One instruction, as one would say it.', 300).min(1))
+      .max(30)
+      .default([])
+      .describe('How the bench is wired for it; shown, and acknowledged, before anything is energised.'),
     cautions: z
       .array(choice(cautions, 'What the person at the bench must mind.'))
       .max(cautions.length)
@@ -21,18 +27,13 @@ export const procedureSchema = z
       .describe('Shown, and acknowledged, before anything is energised.'),
     steps: z.array(z.unknown()).min(1).max(200).describe('What is to be done, in order.'),
     criteria: z.array(z.unknown()).max(200).default([]).describe('What is required of the result.'),
-    derating: camelKeys(
-      z.strictObject({
-        margin: quantity('ratio', 'The part of the usable current that is recommended.', {
-          above: 0,
-          most: 1,
-        }).prefault('80 %'),
-        'above-nameplate': choice(
-          ['never', 'after-soak'],
-          'Whether more than the rated current may ever be recommended.',
-        ).default('never'),
-      }),
+    tolerance: line(
+      'How far the findings may be from those of a baseline: a shipped tolerance by its name, or a file beside this one.',
     )
+      .min(1)
+      .meta({ examples: ['unchanged', 'earth-link-removed'] })
+      .exactOptional(),
+    derating: deratingSchema
       .prefault({})
       .describe('How the recommended current follows from the usable one.'),
   })

@@ -1,15 +1,24 @@
-import type { QuantityOrShare, Ratio } from '../quantity/quantity.js';
+import type { Celsius, QuantityOrAnyShare, Ratio } from '../quantity/quantity.js';
 
 /** A procedure file: what is to be done, in order, and what is required of the result. */
 export interface Procedure {
   readonly name: string;
   readonly title: string;
   readonly purpose: string;
+  readonly circuit: Circuit;
+  /** How the bench is wired for it, an instruction a line. */
+  readonly wiring: readonly string[];
   readonly cautions: readonly CautionName[];
   readonly steps: readonly ProcedureStep[];
   readonly criteria: readonly Criterion[];
+  /** How far the findings may be from those of a baseline, where one is given: a shipped name or a path. */
+  readonly tolerance?: string;
   readonly derating: Derating;
 }
+
+/** How the modules under test are wired: one alone, a parallel group, or a stack. */
+export const circuits = ['single', 'parallel', 'series'] as const;
+export type Circuit = (typeof circuits)[number];
 
 /** `parameters` is what the step kind's own schema made of the file's text. */
 export interface ProcedureStep {
@@ -25,12 +34,25 @@ export interface Criterion {
 }
 
 export type Requirement =
-  | { readonly kind: 'at-least' | 'at-most'; readonly value: QuantityOrShare }
+  | { readonly kind: 'at-least' | 'at-most'; readonly value: QuantityOrAnyShare }
   | { readonly kind: 'is'; readonly word: string };
 
 export interface Derating {
   readonly margin: Ratio;
   readonly aboveNameplate: 'never' | 'after-soak';
+  readonly ambient?: AmbientLine;
+  /** `fixed`: the share of the losses at the soaked current that no load changes. */
+  readonly lossModel?: { readonly fixed: Ratio };
+  /** Of the place where a soak measures. */
+  readonly temperatureLimit?: Celsius;
+}
+
+/** Full load up to `fullTo`, then a straight line down to `fallingTo` at `at`, nothing beyond. */
+export interface AmbientLine {
+  readonly expected: Celsius;
+  readonly fullTo: Celsius;
+  readonly fallingTo: Ratio;
+  readonly at: Celsius;
 }
 
 export const cautions = [

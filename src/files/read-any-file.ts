@@ -8,6 +8,8 @@ import { parseDriver } from './read-driver.js';
 import { parseModule } from './read-module.js';
 import { parseProcedure } from './read-procedure.js';
 import { readAndParse, type FileRead } from './read-text.js';
+import { parseTolerance } from './read-tolerance.js';
+import type { Tolerance } from './tolerance.js';
 import type { Vocabulary } from './vocabulary.js';
 
 /** A user's file of whatever kind. */
@@ -15,7 +17,8 @@ export type AnyFile =
   | { readonly kind: 'module'; readonly content: Module }
   | { readonly kind: 'bench'; readonly content: Bench }
   | { readonly kind: 'driver'; readonly content: Driver }
-  | { readonly kind: 'procedure'; readonly content: Procedure };
+  | { readonly kind: 'procedure'; readonly content: Procedure }
+  | { readonly kind: 'tolerance'; readonly content: Tolerance };
 
 /**
  * Reads a file as what its first line says it is.
@@ -33,6 +36,8 @@ export function readAnyFile(path: string, vocabulary: Vocabulary): Promise<FileR
         return { kind, content: parseDriver(text, fileName) };
       case 'procedure':
         return { kind, content: parseProcedure(text, fileName, vocabulary) };
+      case 'tolerance':
+        return { kind, content: parseTolerance(text, fileName, vocabulary) };
     }
   });
 }

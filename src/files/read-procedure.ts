@@ -35,8 +35,19 @@ export function parseProcedure(text: string, fileName: string, vocabulary: Vocab
     else complaints.push(...criterion);
   }
   if (checked.kind === 'bad' || complaints.length > 0) throw badFile('procedure', document, complaints);
-  const { name, title, purpose, cautions, derating } = checked.value;
-  return { name, title, purpose, cautions, steps, criteria, derating };
+  const { name, title, purpose, circuit, wiring, cautions, tolerance, derating } = checked.value;
+  return {
+    name,
+    title,
+    purpose,
+    circuit,
+    wiring,
+    cautions,
+    steps,
+    criteria,
+    derating,
+    ...(tolerance === undefined ? {} : { tolerance }),
+  };
 }
 
 /**

@@ -22,3 +22,12 @@ export function findingDimension(name: string, vocabulary: Vocabulary): Dimensio
   );
   return family === undefined ? undefined : findings[family];
 }
+
+/** The same, where a family such as `share-of-*` may be meant as a whole. */
+export function familyOrFindingDimension(
+  name: string,
+  vocabulary: Vocabulary,
+): Dimension | 'word' | undefined {
+  const { findings } = vocabulary;
+  return Object.hasOwn(findings, name) ? findings[name] : findingDimension(name, vocabulary);
+}

@@ -1,5 +1,5 @@
 import { decimalExponent, shifted, shiftedText } from './decimal-text.js';
-import type { Dimension, QuantityOrShare } from './quantity.js';
+import type { Dimension, QuantityOrAnyShare } from './quantity.js';
 import { scalesOf, type Scale } from './units.js';
 
 /**
@@ -17,7 +17,7 @@ export function formatQuantity(
 }
 
 /** As a file would write it: `4 A`, `140 % of rated-current`. */
-export function formatShare(quantity: QuantityOrShare, dimension: Dimension): string {
+export function formatShare(quantity: QuantityOrAnyShare, dimension: Dimension): string {
   return quantity.kind === 'absolute'
     ? formatQuantity(quantity.value, dimension)
     : `${formatQuantity(quantity.ratio, 'ratio')} of ${quantity.of}`;

@@ -9,7 +9,14 @@ import {
   tooLarge,
   unknownUnit,
 } from './quantity-error.js';
-import { references, type Dimension, type QuantityOrShare, type ReferenceName } from './quantity.js';
+import {
+  baseline,
+  references,
+  type Dimension,
+  type QuantityOrAnyShare,
+  type QuantityOrShare,
+  type ReferenceName,
+} from './quantity.js';
 import { shown } from './shown-text.js';
 import { readUnit, spellingsOf } from './units.js';
 
@@ -62,6 +69,27 @@ export function quantityPattern(dimension: Dimension): string {
  * @throws QuantityError
  */
 export function parseQuantityOrShare(text: string, dimension: Dimension): QuantityOrShare {
+  return parseShareOf(text, dimension, (name) => readReference(name, dimension));
+}
+
+/**
+ * The same for a criterion, which may also ask for a share of the same finding in the baseline record,
+ * whatever its dimension: `120 % of baseline`.
+ * @throws QuantityError
+ */
+export function parseQuantityOrAnyShare(text: string, dimension: Dimension): QuantityOrAnyShare {
+  return parseShareOf(text, dimension, (name) =>
+    name === baseline ? name : readReference(name, dimension, [baseline]),
+  );
+}
+
+function parseShareOf<Reference>(
+  text: string,
+  dimension: Dimension,
+  reference: (name: string) => Reference,
+):
+  | { readonly kind: 'absolute'; readonly value: number }
+  | { readonly kind: 'share'; readonly ratio: number; readonly of: Reference } {
   refuseOverlong(text, dimension);
   const [, digits, name] = share.exec(text) ?? [];
   if (digits === undefined || (name === undefined && dimension === 'ratio')) {
@@ -70,7 +98,7 @@ export function parseQuantityOrShare(text: string, dimension: Dimension): Quanti
   if (name === undefined) throw shareOfNothing(text, dimension);
   const ratio = readDecimal(digits, -2);
   if (!Number.isFinite(ratio)) throw tooLarge(text, dimension);
-  return { kind: 'share', ratio, of: readReference(name, dimension) };
+  return { kind: 'share', ratio, of: reference(name) };
 }
 
 /**
@@ -79,6 +107,14 @@ export function parseQuantityOrShare(text: string, dimension: Dimension): Quanti
  */
 export function readQuantityOrShare(value: unknown, dimension: Dimension): QuantityOrShare {
   return parseQuantityOrShare(quantityText(value, dimension), dimension);
+}
+
+/**
+ * As {@link parseQuantityOrAnyShare}, for a value straight out of a file, where anything may stand.
+ * @throws QuantityError
+ */
+export function readQuantityOrAnyShare(value: unknown, dimension: Dimension): QuantityOrAnyShare {
+  return parseQuantityOrAnyShare(quantityText(value, dimension), dimension);
 }
 
 /** A regular expression, for JSON Schema, of what {@link parseQuantityOrShare} takes. */
@@ -116,8 +152,13 @@ export function referencesTo(dimension: Dimension): readonly ReferenceName[] {
   return (Object.keys(references) as ReferenceName[]).filter((name) => references[name] === dimension);
 }
 
-function readReference(name: string, dimension: Dimension): ReferenceName {
-  const names = referencesTo(dimension);
+/** `besides` are names that will do here too. */
+function readReference(name: string, dimension: Dimension, besides: readonly string[] = []): ReferenceName {
+  if (name === baseline) {
+    const message = `${shown(name)} is known only when all is done, so only a criterion may refer to it`;
+    throw shareError(`${message}; ${mayReferTo(dimension)}`, name, dimension);
+  }
+  const names = [...referencesTo(dimension), ...besides];
   if (!Object.hasOwn(references, name)) {
     const guess = didYouMean(name, names);
     const hint = guess === '' ? `; ${mayReferTo(dimension)}` : guess;

@@ -44,3 +44,10 @@ export const references = {
 } as const satisfies Record<string, Dimension>;
 
 export type ReferenceName = keyof typeof references;
+
+/** The same finding in the record of an earlier run; only what is decided afterwards may refer to it. */
+export const baseline = 'baseline';
+
+/** A quantity as a criterion may write it: `20 mΩ`, `100 % of rated-current`, `120 % of baseline`. */
+export type QuantityOrAnyShare =
+  QuantityOrShare | { readonly kind: 'share'; readonly ratio: Ratio; readonly of: typeof baseline };

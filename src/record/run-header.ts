@@ -2,6 +2,7 @@ import { createHash } from 'node:crypto';
 import { existsSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { z } from 'zod';
+import { baselineSchema } from './baseline.js';
 import { BadRecordError, NoRecordError } from './record-error.js';
 
 /**
@@ -18,6 +19,8 @@ const ratedValues = z.object({
 });
 
 const accuracy = z.object({ ofReading: z.number(), fixed: z.number(), resolution: z.number().optional() });
+
+const uncertainResistance = z.object({ resistance: z.number(), uncertainty: z.number() });
 
 const instrument = z.object({
   role: z.string(),
@@ -62,11 +65,17 @@ const headerSchema = z.object({
       }),
     )
     .min(1),
+  /** How the modules are wired; in the order in which they stand above, the lowest of a stack first. */
+  circuit: z.enum(['single', 'parallel', 'series']).default('single'),
   bench: z.object({
     name: z.string(),
-    leads: z.object({ resistance: z.number(), uncertainty: z.number() }),
+    leads: uncertainResistance,
     voltageFrom: z.enum(['meter-at-module', 'load-terminals']),
     simulated: z.boolean(),
+    ambient: z.object({ temperature: z.number(), uncertainty: z.number() }).optional(),
+    limits: z.object({ temperature: z.number().optional() }).optional(),
+    /** In the order of the modules. */
+    places: z.array(z.object({ ballast: uncertainResistance.optional() })).optional(),
   }),
   procedure: z.object({ name: z.string(), title: z.string(), cautions: z.array(z.string()) }),
   /** In order; `settings` are the step's parameters in words and numbers, as its kind understood them. */
@@ -74,7 +83,17 @@ const headerSchema = z.object({
     z.object({ kind: z.string(), summary: z.string(), settings: z.record(z.string(), z.unknown()) }),
   ),
   criteria: z.array(z.object({ finding: z.string(), requirement })),
-  derating: z.object({ margin: z.number(), aboveNameplate: z.enum(['never', 'after-soak']) }),
+  /** Where the run was to be judged against an earlier one. */
+  baseline: baselineSchema.optional(),
+  derating: z.object({
+    margin: z.number(),
+    aboveNameplate: z.enum(['never', 'after-soak']),
+    ambient: z
+      .object({ expected: z.number(), fullTo: z.number(), fallingTo: z.number(), at: z.number() })
+      .optional(),
+    lossModel: z.object({ fixed: z.number() }).optional(),
+    temperatureLimit: z.number().optional(),
+  }),
   instruments: z.array(instrument),
   /** Every input file, as it was. */
   files: z.array(z.object({ kind: z.string(), path: z.string(), sha256: z.string(), text: z.string() })),

@@ -2,11 +2,10 @@ import { normalDistribution } from './normal.js';
 import { studentTDistribution } from './student-t.js';
 import { UnfitDataError } from './unfit-data-error.js';
 
-/** What is asked of a value: one limit, on one side. */
-export interface Requirement {
-  readonly kind: 'at-least' | 'at-most';
-  readonly limit: number;
-}
+/** What is asked of a value: a limit on one side, or one on each. */
+export type Requirement =
+  | { readonly kind: 'at-least' | 'at-most'; readonly limit: number }
+  | { readonly kind: 'between'; readonly least: number; readonly most: number };
 
 export interface GuardedValue {
   readonly value: number;
@@ -27,7 +26,8 @@ export interface GuardedDecision {
 /**
  * Decides whether a measured value meets a requirement, with a guard band as wide as its expanded
  * uncertainty on both sides of the limit (ILAC-G8:09/2019, non-binary statement with w = U; JCGM 106:2012,
- * clause 8, guarded acceptance and guarded rejection), and with the probability of conformity (clause 7).
+ * clause 8, guarded acceptance and guarded rejection), and with the probability of conformity (clause 7; of
+ * two limits 7.4). Between two limits that are closer than 2 U nothing can be accepted.
  *
  * The sources leave open where a value exactly on a border belongs. Here: on the acceptance limit
  * (limit − w for at-most) it conforms; on the rejection limit (limit + w) it is undecided, as only what
@@ -38,29 +38,62 @@ export interface GuardedDecision {
  */
 export function decide(measured: GuardedValue): GuardedDecision {
   requireSound(measured);
-  const { value, expanded, requirement } = measured;
-  // Positive on the good side of the limit, whichever side that is.
-  const margin = requirement.kind === 'at-least' ? value - requirement.limit : requirement.limit - value;
-  const rounding = 4 * Number.EPSILON * (Math.abs(value) + Math.abs(requirement.limit));
-  const probability = probabilityOfConformity(measured, margin, rounding);
+  const { expanded } = measured;
+  const below = marginTo('at-most', measured);
+  const above = marginTo('at-least', measured);
+  // Positive on the good side of the limit, whichever side that is; of two limits the nearer one counts.
+  const margin = Math.min(below, above);
+  const rounding = roundingOf(measured);
+  const probability = probabilityOfConformity(measured, { below, above, rounding });
   if (margin >= expanded - rounding) return { outcome: 'conforms', probability };
   if (margin < -expanded - rounding) return { outcome: 'does-not-conform', probability };
   return { outcome: 'undecided', probability };
 }
 
-function probabilityOfConformity(measured: GuardedValue, margin: number, rounding: number): number {
-  const { standardUncertainty, degreesOfFreedom } = measured;
-  if (standardUncertainty === 0) return margin >= -rounding ? 1 : 0;
-  const deviations = margin / standardUncertainty;
-  return degreesOfFreedom === undefined
-    ? normalDistribution(deviations)
-    : studentTDistribution(deviations, degreesOfFreedom);
+/** How far the value is on the good side of its limit of this kind; Infinity where there is none. */
+function marginTo(side: 'at-least' | 'at-most', { value, requirement }: GuardedValue): number {
+  if (requirement.kind === 'between')
+    return side === 'at-least' ? value - requirement.least : requirement.most - value;
+  if (requirement.kind !== side) return Infinity;
+  return side === 'at-least' ? value - requirement.limit : requirement.limit - value;
+}
+
+/** A few units in the last place of what was subtracted. */
+function roundingOf({ value, requirement }: GuardedValue): number {
+  const size =
+    requirement.kind === 'between'
+      ? Math.max(Math.abs(requirement.least), Math.abs(requirement.most))
+      : Math.abs(requirement.limit);
+  return 4 * Number.EPSILON * (Math.abs(value) + size);
+}
+
+function probabilityOfConformity(
+  { standardUncertainty, degreesOfFreedom }: GuardedValue,
+  { below, above, rounding }: { readonly below: number; readonly above: number; readonly rounding: number },
+): number {
+  if (standardUncertainty === 0) return Math.min(below, above) >= -rounding ? 1 : 0;
+  const distribution = (deviations: number): number =>
+    degreesOfFreedom === undefined
+      ? normalDistribution(deviations)
+      : studentTDistribution(deviations, degreesOfFreedom);
+  // Of two tails the difference of the small ones is taken, which keeps its digits.
+  const [near, far] = [Math.min(below, above), Math.max(below, above)];
+  return (
+    distribution(near / standardUncertainty) -
+    (far === Infinity ? 0 : distribution(-far / standardUncertainty))
+  );
 }
 
 function requireSound({ value, standardUncertainty, expanded, requirement }: GuardedValue): void {
   if (!Number.isFinite(value)) throw new UnfitDataError('decide', `the value is ${value}`);
-  if (!Number.isFinite(requirement.limit))
-    throw new UnfitDataError('decide', `the limit is ${requirement.limit}`);
+  const limits = requirement.kind === 'between' ? [requirement.least, requirement.most] : [requirement.limit];
+  for (const limit of limits) {
+    if (!Number.isFinite(limit)) throw new UnfitDataError('decide', `the limit is ${limit}`);
+  }
+  if (requirement.kind === 'between' && requirement.least > requirement.most) {
+    const { least, most } = requirement;
+    throw new UnfitDataError('decide', `the limits are ${least} and ${most}, in the wrong order`);
+  }
   if (!(standardUncertainty >= 0 && standardUncertainty < Infinity)) {
     throw new UnfitDataError('decide', `the standard uncertainty is ${standardUncertainty}`);
   }

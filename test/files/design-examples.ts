@@ -86,6 +86,15 @@ criteria:
 derating: { margin: 80 %, above-nameplate: never }
 `;
 
+export const toleranceExample = `railproof: tolerance 1
+name: earth-link-removed
+title: After removing the earth link and adding a reverse diode
+findings:
+  - { finding: earth-relation, becomes: isolated }
+  - { finding: open-circuit-voltage, within: 0.5 % }      # a share of the earlier value, or a quantity: 50 mV
+  - { finding: limit-style, same: true }
+`;
+
 /** A vocabulary of our own with the shape of the real one, which lives in other rooms. */
 export const vocabulary: Vocabulary = {
   stepKinds: [
@@ -122,6 +131,7 @@ export const vocabulary: Vocabulary = {
     'open-circuit-voltage': 'voltage',
     'load-regulation': 'ratio',
     'limit-style': 'word',
+    'earth-relation': 'word',
     'hogging-module': 'word',
     'share-of-*': 'ratio',
   },

@@ -8,6 +8,7 @@ import {
   moduleExample,
   procedureExample,
   simulationExample,
+  toleranceExample,
   vocabulary,
 } from './design-examples.js';
 
@@ -16,6 +17,16 @@ const examples: Record<FileKind, string> = {
   bench: benchExample + simulationExample,
   driver: driverExample,
   procedure: procedureExample,
+  tolerance: toleranceExample,
+};
+
+/** A part of a file with a bare number in it, and where that stands. */
+const bareNumbers: Record<FileKind, readonly [object, string]> = {
+  module: [{ rated: { voltage: 4 } }, '/rated/voltage'],
+  bench: [{ limits: { voltage: 4 } }, '/limits/voltage'],
+  driver: [{ ratings: { voltage: 4 } }, '/ratings/voltage'],
+  procedure: [{ derating: { margin: 4 } }, '/derating/margin'],
+  tolerance: [{ findings: [{ finding: 'usable-current', within: 4 }] }, '/findings/0/within'],
 };
 
 describe.each([...fileKinds])('the schema of a %s', (kind) => {
@@ -34,11 +45,8 @@ describe.each([...fileKinds])('the schema of a %s', (kind) => {
   it('does not take an unknown key, or a bare number for a quantity', () => {
     const value = parseYaml(examples[kind], 'example.yaml').value as object;
     expect(mismatches(schema, { ...value, nonsense: 1 }, '')).toEqual(['/nonsense: not described']);
-    const section = { module: 'rated', bench: 'limits', driver: 'ratings', procedure: 'derating' }[kind];
-    const key = kind === 'procedure' ? 'margin' : 'voltage';
-    expect(mismatches(schema, { ...value, [section]: { [key]: 4 } }, '')).toContain(
-      `/${section}/${key}: not a string`,
-    );
+    const [part, place] = bareNumbers[kind];
+    expect(mismatches(schema, { ...value, ...part }, '')).toContain(`${place}: not a string`);
   });
 
   it('describes every key', () => {
