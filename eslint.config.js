@@ -14,11 +14,11 @@ export const mayImport = {
   files: ['errors', 'quantity'],
   instrument: ['errors', 'clock', 'quantity', 'files'],
   bench: ['errors', 'clock', 'quantity', 'files', 'instrument'],
-  steps: ['errors', 'clock', 'quantity', 'statistics', 'files', 'record', 'bench'],
-  run: ['errors', 'clock', 'quantity', 'files', 'record', 'bench', 'steps'],
+  steps: ['errors', 'clock', 'quantity', 'statistics', 'circuit', 'files', 'record', 'bench'],
+  run: ['errors', 'clock', 'quantity', 'circuit', 'files', 'record', 'bench', 'steps'],
   simulation: ['errors', 'clock', 'quantity', 'files', 'instrument', 'circuit'],
   analysis: ['errors', 'quantity', 'statistics', 'circuit', 'record'],
-  judgement: ['errors', 'quantity', 'statistics', 'record', 'analysis'],
+  judgement: ['errors', 'quantity', 'statistics', 'circuit', 'record', 'analysis'],
   report: ['errors', 'quantity', 'record', 'analysis', 'judgement'],
 };
 /** Rooms that compute only: no ports, files, clocks or processes. */

@@ -43,11 +43,24 @@ export interface PointEvidence {
   readonly moduleVoltage: RunningMoments;
   readonly loadVoltage: RunningMoments;
   readonly current: RunningMoments;
-  /** Of an overload, the first samples one by one: an average would hide how the module limits. */
+  /** Of what was read elsewhere than at the usual place, by where: `ballast-of-K1`. */
+  readonly taps: ReadonlyMap<string, RunningMoments>;
+  readonly temperature: RunningMoments;
+  /** Of an ohmmeter; `open` counts the times it showed overload, which is how an open circuit reads. */
+  readonly resistance: { readonly values: RunningMoments; readonly open: number };
+  /** The module that the point is about, where it is about one of several. */
+  readonly of: string | undefined;
+  /** Of an overload and of a trace, the first samples one by one: an average would hide how the module limits. */
   readonly samples: readonly { readonly voltage: Volts; readonly current: Amperes }[];
 }
 
-type Growing<T> = { -readonly [Key in keyof T]: T[Key] extends readonly (infer Item)[] ? Item[] : T[Key] };
+type Growing<T> = {
+  -readonly [Key in keyof T]: T[Key] extends readonly (infer Item)[]
+    ? Item[]
+    : T[Key] extends ReadonlyMap<infer Name, infer Value>
+      ? Map<Name, Value>
+      : T[Key];
+};
 
 const mostSamples = 500;
 /** A journal made elsewhere may hold this and more: it is overload or no number, and never a value (SCPI-99). */
@@ -59,7 +72,8 @@ export class EvidenceCollector {
   readonly #steps: Growing<StepEvidence>[] = [];
   #point: Growing<PointEvidence> | undefined;
   #loadVoltage = Number.NaN;
-  #meterVoltage = Number.NaN;
+  /** Undefined where the meter's probes were elsewhere; not a number where it had no value. */
+  #meterVoltage: Volts | undefined;
   #ended: Ended | undefined;
   #tripped: GuardTripped | undefined;
   #readings = 0;
@@ -133,11 +147,22 @@ export class EvidenceCollector {
   }
 
   /** The load's current comes last in a sample, so the sample is whole when it is there. */
-  #addReading({ of, what, value }: ReadingTaken): void {
+  #addReading({ of, what, at, value, problem }: ReadingTaken): void {
     this.#readings += 1;
     const point = this.#point;
     if (point === undefined) return;
     const number = value !== null && Math.abs(value) < overload ? value : Number.NaN;
+    if (what === 'resistance') {
+      const { values, open } = point.resistance;
+      addIfValue(values, number);
+      if (problem === 'overload') point.resistance = { values, open: open + 1 };
+      return;
+    }
+    if (of === 'thermometer' && what === 'temperature') addIfValue(point.temperature, number);
+    if (at !== undefined) {
+      addIfValue(momentsAt(point.taps, at), number);
+      return;
+    }
     if (of === 'meter' && what === 'voltage') this.#meterVoltage = number;
     if (of === 'load' && what === 'voltage') this.#loadVoltage = number;
     if (of !== 'load' || what !== 'current') return;
@@ -145,7 +170,7 @@ export class EvidenceCollector {
     addIfValue(point.moduleVoltage, voltage);
     addIfValue(point.loadVoltage, this.#loadVoltage);
     addIfValue(point.current, number);
-    if (point.phase === 'overload' && point.samples.length < mostSamples) {
+    if ((point.phase === 'overload' || point.phase === 'trace') && point.samples.length < mostSamples) {
       point.samples.push({ voltage, current: number });
     }
     this.#forgetSample();
@@ -153,22 +178,30 @@ export class EvidenceCollector {
 
   #forgetSample(): void {
     this.#loadVoltage = Number.NaN;
-    this.#meterVoltage = Number.NaN;
+    this.#meterVoltage = undefined;
   }
 
   #moduleVoltage(current: Amperes): Volts {
     const { voltageFrom, leads } = this.#header.bench;
-    return voltageFrom === 'meter-at-module'
+    return voltageFrom === 'meter-at-module' && this.#meterVoltage !== undefined
       ? this.#meterVoltage
       : this.#loadVoltage + current * leads.resistance;
   }
+}
+
+function momentsAt(taps: Map<string, RunningMoments>, at: string): RunningMoments {
+  const known = taps.get(at);
+  if (known !== undefined) return known;
+  const fresh = new RunningMoments();
+  taps.set(at, fresh);
+  return fresh;
 }
 
 function addIfValue(moments: RunningMoments, value: number): void {
   if (!Number.isNaN(value)) moments.add(value);
 }
 
-function newPoint({ point, phase, set }: PointBegan, t: Seconds): Growing<PointEvidence> {
+function newPoint({ point, phase, set, of }: PointBegan, t: Seconds): Growing<PointEvidence> {
   return {
     point,
     phase,
@@ -178,6 +211,10 @@ function newPoint({ point, phase, set }: PointBegan, t: Seconds): Growing<PointE
     moduleVoltage: new RunningMoments(),
     loadVoltage: new RunningMoments(),
     current: new RunningMoments(),
+    taps: new Map(),
+    temperature: new RunningMoments(),
+    resistance: { values: new RunningMoments(), open: 0 },
+    of,
     samples: [],
   };
 }

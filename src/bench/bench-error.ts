@@ -1,6 +1,6 @@
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Amperes } from '../quantity/quantity.js';
+import type { Amperes, Volts } from '../quantity/quantity.js';
 
 /** A reading went beyond a limit: the run stops and the bench is made safe. */
 export class GuardTrippedError extends RailproofError {
@@ -50,10 +50,13 @@ export class LoadSwitchedOffError extends RailproofError {
   readonly exitCode = exitCodes.stopped;
   readonly address: string;
   /** What the load had been set to. */
-  readonly current: Amperes;
+  readonly set: { readonly current?: Amperes; readonly voltage?: Volts };
 
-  constructor(address: string, current: Amperes) {
-    const at = formatQuantity(current, 'current', { significant: 4 });
+  constructor(address: string, set: LoadSwitchedOffError['set']) {
+    const at =
+      set.voltage === undefined
+        ? formatQuantity(set.current ?? 0, 'current', { significant: 4 })
+        : formatQuantity(set.voltage, 'voltage', { significant: 4 });
     super(
       `the load at ${address} switched its input off by itself at ${at}: its own protection, or someone at its panel`,
       {
@@ -63,7 +66,7 @@ export class LoadSwitchedOffError extends RailproofError {
       },
     );
     this.address = address;
-    this.current = current;
+    this.set = set;
   }
 }
 

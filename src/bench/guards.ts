@@ -1,5 +1,5 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Dimension, Volts } from '../quantity/quantity.js';
+import type { Celsius, Dimension, Volts } from '../quantity/quantity.js';
 import { GuardTrippedError } from './bench-error.js';
 import { type Ceilings, overCurrentFactor } from './ceilings.js';
 import type { Taken } from './sample.js';
@@ -7,6 +7,7 @@ import type { Taken } from './sample.js';
 export interface GuardLimits extends Ceilings {
   /** The nameplate's; a voltage further below zero than a fiftieth of it is reversed polarity. */
   readonly ratedVoltage: Volts;
+  readonly temperature?: Celsius | undefined;
 }
 
 /**
@@ -14,7 +15,8 @@ export interface GuardLimits extends Ceilings {
  * @throws GuardTrippedError naming the guard, the reading and who set the limit.
  */
 export function guard(taken: readonly Taken[], limits: GuardLimits): void {
-  for (const { of, what, measurement } of taken) {
+  for (const { of, what, at, measurement } of taken) {
+    if (what === 'resistance') continue;
     if (measurement.kind === 'overload') {
       throw new GuardTrippedError(
         `over-${what}`,
@@ -23,8 +25,10 @@ export function guard(taken: readonly Taken[], limits: GuardLimits): void {
       );
     }
     if (measurement.kind !== 'value') continue;
-    if (what === 'voltage') guardVoltage(of, measurement.value, limits);
+    // Across a ballast, or across a module that its string drives, the sign says something else.
+    if (what === 'voltage' && at === undefined) guardVoltage(of, measurement.value, limits);
     if (what === 'current') guardCurrent(of, measurement.value, limits);
+    if (what === 'temperature') guardTemperature(of, measurement.value, limits);
   }
   guardPower(taken, limits);
 }
@@ -52,6 +56,15 @@ function guardCurrent(of: string, amps: number, limits: GuardLimits): void {
     'over-current',
     `the ${of} reads ${reading(amps, 'current')} and ${limits.current.setBy} allows ${formatQuantity(limits.current.value, 'current')}`,
     'the load does not keep its set current',
+  );
+}
+
+function guardTemperature(of: string, celsius: number, limits: GuardLimits): void {
+  if (limits.temperature === undefined || celsius <= limits.temperature) return;
+  throw new GuardTrippedError(
+    'over-temperature',
+    `the ${of} reads ${reading(celsius, 'temperature')} and the bench allows ${formatQuantity(limits.temperature, 'temperature')}`,
+    'let it cool; see that nothing covers it, and ask for less current',
   );
 }
 
@@ -95,8 +108,8 @@ function reading(value: number, dimension: Dimension): string {
   return formatQuantity(value, dimension, { significant: 4 });
 }
 
-/** Not a number when it was not read. */
-export function valueOf(taken: readonly Taken[], of: string, what: string): number {
-  const found = taken.find((one) => one.of === of && one.what === what);
+/** Of what was read at the usual place, or at `at`; not a number when it was not read. */
+export function valueOf(taken: readonly Taken[], of: string, what: string, at?: string): number {
+  const found = taken.find((one) => one.of === of && one.what === what && one.at === at);
   return found?.measurement.kind === 'value' ? found.measurement.value : Number.NaN;
 }

@@ -62,6 +62,19 @@ export class Load {
     await this.instrument.perform('set-current', { amps: Math.max(0, amps) });
   }
 
+  /**
+   * Constant voltage: what flows is the module's doing, so only the guards and the load's own protection keep
+   * it below the ceilings.
+   */
+  async setVoltage(volts: Volts): Promise<void> {
+    await this.instrument.perform('set-voltage', { volts: Math.max(0, volts) });
+  }
+
+  /** With the input off: what is set of the one means nothing in the other. */
+  async mode(mode: 'current' | 'voltage'): Promise<void> {
+    await this.instrument.perform(`${mode}-mode`);
+  }
+
   /** @throws DisobeyedError when the load says that its input is still off. */
   async inputOn(): Promise<void> {
     await this.instrument.perform('input-on');

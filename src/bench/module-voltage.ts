@@ -6,11 +6,13 @@ import type { Taken } from './sample.js';
 type Described = Pick<OpenBench, 'description'>;
 
 /**
- * The voltage at the module, from where the bench file says that it is read: the meter's, or the load's and
- * what the leads lose. Not a number when it could not be read.
+ * The voltage of the whole, from where the bench file says that it is read: the meter's, or the load's and
+ * what the leads lose; the latter also while the meter's probes are elsewhere. Not a number when it could
+ * not be read.
  */
 export function moduleVoltage({ description }: Described, taken: readonly Taken[]): Volts {
-  if (description.voltageFrom === 'meter-at-module') return valueOf(taken, 'meter', 'voltage');
+  const metered = taken.some(({ of, what, at }) => of === 'meter' && what === 'voltage' && at === undefined);
+  if (description.voltageFrom === 'meter-at-module' && metered) return valueOf(taken, 'meter', 'voltage');
   const current = valueOf(taken, 'load', 'current');
   return valueOf(taken, 'load', 'voltage') + current * description.leads.resistance;
 }

@@ -1,6 +1,5 @@
 import type { Clock } from '../clock/clock.js';
-import type { Bench, BenchDrivers } from '../files/bench.js';
-import type { Driver } from '../files/driver.js';
+import { type Bench, type BenchDrivers, driverAt, type Post, postsOf, roleOf } from '../files/bench.js';
 import type { Connect } from '../instrument/connect.js';
 import { Instrument, type InstrumentParts } from '../instrument/instrument.js';
 import type { Seconds } from '../quantity/quantity.js';
@@ -8,7 +7,8 @@ import { Audience } from './audience.js';
 import { type Ceilings, ceilingsOf } from './ceilings.js';
 import { sayWhatIsOn } from './found-on.js';
 import { type InputListener, Load } from './load.js';
-import type { Taken } from './sample.js';
+import { MeterPlaces } from './meter-places.js';
+import type { SampleWanted, Taken } from './sample.js';
 
 export interface BenchParts {
   readonly bench: Bench;
@@ -28,9 +28,15 @@ export interface OpenBench {
   /** The one that was opened last. */
   readonly load: Load;
   readonly meter: Instrument | undefined;
-  readonly instruments: readonly Instrument[];
-  /** Reads everything there is to read at one moment; `each` is told of every value as it comes. */
-  sample(each: (taken: Taken) => void): Promise<readonly Taken[]>;
+  readonly thermometer: Instrument | undefined;
+  /** Where the meters' probes are. */
+  readonly places: MeterPlaces;
+  readonly instruments: readonly BenchInstrument[];
+  /**
+   * Reads everything there is to read at one moment; `each` is told of every value as it comes, the load's
+   * current last.
+   */
+  sample(each: (taken: Taken) => void, wanted?: SampleWanted): Promise<readonly Taken[]>;
   /**
    * Closes the load's connection and, after a pause, opens it again to make it safe: what makes it safe is
    * told before anything is asked. Hands over a load that answers.
@@ -42,20 +48,30 @@ export interface OpenBench {
   close(): Promise<void>;
 }
 
+/** An instrument and its post on the bench. */
+export interface BenchInstrument {
+  readonly post: Post;
+  readonly instrument: Instrument;
+}
+
 /**
  * Opens the instruments of a bench; those already open are closed again when one of them fails.
- * Nothing is switched on.
+ * Nothing is switched on. Posts for which no driver is given are left alone.
  * @throws FoundOnError when another instrument fails and the load is on, though nobody here switched it on
  */
 export async function openBench(parts: BenchParts): Promise<OpenBench> {
   const audience = new Audience(parts.onInput, parts.onNotice);
-  const load = await openInstrument(parts, audience, 'load', parts.drivers.load, parts.first);
+  const load = await openInstrument(parts, audience, 'load', parts.first);
+  const others: BenchInstrument[] = [];
   try {
-    const meter =
-      parts.drivers.meter && (await openInstrument(parts, audience, 'meter', parts.drivers.meter));
-    return assemble(parts, audience, load, meter);
+    for (const [post] of postsOf(parts.bench)) {
+      if (post === 'load' || driverAt(parts.drivers, post) === undefined) continue;
+      others.push({ post, instrument: await openInstrument(parts, audience, post) });
+    }
+    return assemble(parts, audience, load, others);
   } catch (error) {
     const told = await sayWhatIsOn(load, error);
+    for (const { instrument } of others) await instrument.close();
     await load.close();
     throw told;
   }
@@ -65,12 +81,20 @@ function assemble(
   parts: BenchParts,
   audience: Audience,
   first: Instrument,
-  meter: Instrument | undefined,
+  others: readonly BenchInstrument[],
 ): OpenBench {
   const ceilings = ceilingsOf(parts.bench, parts.drivers);
   let load = new Load(first, ceilings, audience.input);
-  const instruments = (): readonly Instrument[] =>
-    meter === undefined ? [load.instrument] : [load.instrument, meter];
+  const at = (post: Post): Instrument | undefined => others.find((one) => one.post === post)?.instrument;
+  const meter = at('meter');
+  const scanner = at('scanner');
+  const thermometer = at('thermometer');
+  const own = others.filter(({ post }) => post.startsWith('meter-')).map(({ instrument }) => instrument);
+  const places = new MeterPlaces(parts.bench, { meter, scanner, own });
+  const instruments = (): readonly BenchInstrument[] => [
+    { post: 'load', instrument: load.instrument },
+    ...others,
+  ];
   const regardless = <T>(work: () => Promise<T>): Promise<T> => audience.regardless(work);
   return {
     description: parts.bench,
@@ -79,16 +103,21 @@ function assemble(
       return load;
     },
     meter,
+    thermometer,
+    places,
     get instruments() {
       return instruments();
     },
-    async sample(each) {
+    async sample(each, { taps = [], temperature = false } = {}) {
       const taken: Taken[] = [];
       const take = (one: Taken): void => {
         each(one);
         taken.push(one);
       };
-      if (meter) take({ of: 'meter', what: 'voltage', measurement: await meter.read('voltage') });
+      await places.read(taps, take);
+      if (temperature && thermometer) {
+        take({ of: 'thermometer', what: 'temperature', measurement: await thermometer.read('temperature') });
+      }
       take({ of: 'load', what: 'voltage', measurement: await load.readVoltage() });
       take({ of: 'load', what: 'current', measurement: await load.readCurrent() });
       return taken;
@@ -96,17 +125,14 @@ function assemble(
     async reopenLoad(pause) {
       await load.instrument.close();
       await parts.clock.sleep(pause);
-      load = new Load(
-        await openInstrument(parts, audience, 'load', parts.drivers.load, 'make-safe'),
-        ceilings,
-        audience.input,
-      );
+      load = new Load(await openInstrument(parts, audience, 'load', 'make-safe'), ceilings, audience.input);
       return load;
     },
     regardless,
     close: () =>
       regardless(async () => {
-        for (const instrument of instruments()) {
+        await places.release().catch(() => undefined);
+        for (const { instrument } of instruments()) {
           await instrument.release().catch(() => undefined);
           await instrument.close();
         }
@@ -115,15 +141,15 @@ function assemble(
 }
 
 async function openInstrument(
-  { bench, connect, clock }: BenchParts,
+  { bench, drivers, connect, clock }: BenchParts,
   { notice }: Audience,
-  role: keyof Bench['instruments'],
-  driver: Driver,
+  post: Post,
   first: InstrumentParts['first'] = 'identity',
 ): Promise<Instrument> {
-  const place = bench.instruments[role];
-  if (place === undefined) throw new Error(`the bench has no ${role}`);
-  const connection = await connect(place.connection, driver, role);
+  const place = postsOf(bench).find(([one]) => one === post)?.[1];
+  const driver = driverAt(drivers, post);
+  if (place === undefined || driver === undefined) throw new Error(`the bench has no ${post}`);
+  const connection = await connect(place.connection, driver, post);
   // When this fails it has closed the connection.
-  return Instrument.open({ role, driver, connection, clock, onNotice: notice, first });
+  return Instrument.open({ role: roleOf(post), driver, connection, clock, onNotice: notice, first });
 }

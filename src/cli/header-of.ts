@@ -12,16 +12,24 @@ export function headerOf({ plan, files }: LoadedPlan, bench: OpenBench, began: D
     format: headerFormat,
     program: packageFacts(),
     began: began.toISOString(),
-    modules: plan.modules.map((module) => ({
+    modules: plan.underTest.modules.map((module) => ({
       ...module,
       rated: { ...module.rated },
       changes: [...module.changes],
     })),
+    circuit: procedure.circuit,
     bench: {
       name: plan.bench.name,
       leads: plan.bench.leads,
       voltageFrom: plan.bench.voltageFrom,
       simulated: plan.bench.simulation !== undefined,
+      ...(plan.bench.ambient === undefined ? {} : { ambient: plan.bench.ambient }),
+      limits: { temperature: plan.bench.limits.temperature },
+      ...(plan.bench.group === undefined
+        ? {}
+        : {
+            places: plan.bench.group.places.map(({ ballast }) => (ballast === undefined ? {} : { ballast })),
+          }),
     },
     procedure: { name: procedure.name, title: procedure.title, cautions: [...plan.cautions] },
     steps: plan.steps.map(({ kind, summary, parameters }) => ({
@@ -31,8 +39,8 @@ export function headerOf({ plan, files }: LoadedPlan, bench: OpenBench, began: D
     })),
     criteria: procedure.criteria.map(({ finding, requirement }) => ({ finding, requirement })),
     derating: procedure.derating,
-    instruments: bench.instruments.map(({ role, driver, address, identity }) => ({
-      role,
+    instruments: bench.instruments.map(({ post, instrument: { driver, address, identity } }) => ({
+      role: post,
       driver: driver.name,
       address,
       identity,
@@ -43,8 +51,7 @@ export function headerOf({ plan, files }: LoadedPlan, bench: OpenBench, began: D
       fileOf('procedure', files.procedure),
       fileOf('bench', files.bench),
       ...files.modules.map((module) => fileOf('module', module)),
-      fileOf('driver', files.drivers.load),
-      ...(files.drivers.meter === undefined ? [] : [fileOf('driver', files.drivers.meter)]),
+      ...files.drivers.map(({ file }) => fileOf('driver', file)),
     ],
   };
 }

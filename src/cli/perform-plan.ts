@@ -84,12 +84,13 @@ async function beginRecord(
   const { plan } = loaded;
   const began = clock.wall();
   try {
-    const folder = makeRunFolder(runs, began, plan.module.name, plan.procedure.name);
+    const folder = makeRunFolder(runs, began, plan.underTest.name, plan.procedure.name);
     const header = writeHeader(folder, headerOf(loaded, bench, began));
     const journal = new JournalWriter(folder.journal, () => clock.now());
     journal.append({ event: 'opened', format: journalFormat, wallClock: began.toISOString(), header });
-    for (const { role, address, identity } of bench.instruments) {
-      journal.append({ event: 'instrument', role, address, identity });
+    for (const { post, instrument } of bench.instruments) {
+      const { address, identity } = instrument;
+      journal.append({ event: 'instrument', role: post, address, identity });
     }
     return { folder, journal };
   } catch (error) {

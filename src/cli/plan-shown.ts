@@ -13,7 +13,8 @@ export function planAsText(plan: Plan): string {
   ]);
   return [
     `${plan.procedure.name}: ${plan.procedure.title}`,
-    `module ${plan.module.name} on ${plan.bench.name}`,
+    `${underTestInWords(plan)} on ${plan.bench.name}`,
+    ...plan.procedure.wiring.map((line) => `  wiring: ${line}`),
     ...alignTable(rows, ['right', 'left', 'left', 'left']).map((row) => `  ${row}`),
     `cautions to acknowledge: ${plan.cautions.length === 0 ? 'none' : plan.cautions.join(', ')}`,
     `never above ${formatQuantity(current.value, 'current')} (${current.setBy}), ` +
@@ -24,14 +25,20 @@ export function planAsText(plan: Plan): string {
   ].join('\n');
 }
 
+function underTestInWords({ underTest: { circuit, name } }: Plan): string {
+  return circuit === 'single' ? `module ${name}` : `modules ${name} in ${circuit}`;
+}
+
 /** The same for a program; times in seconds, ceilings in A, V and W. */
 export function planAsJson(plan: Plan): object {
   return {
     format: 'railproof/plan 1',
     procedure: plan.procedure.name,
-    module: plan.module.name,
+    module: plan.underTest.name,
+    circuit: plan.underTest.circuit,
     bench: plan.bench.name,
     steps: plan.steps.map(({ kind, summary, duration }) => ({ kind: kind.kind, summary, seconds: duration })),
+    wiring: plan.procedure.wiring,
     cautions: plan.cautions,
     ceilings: plan.ceilings,
     seconds: plan.duration,

@@ -1,6 +1,7 @@
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { jsonText } from '../report/json-text.js';
 import type { Plan } from '../run/plan.js';
+import { needsOperator } from '../run/plan-circuit.js';
 import { OperatorAbsentError } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
 import type { Operator } from '../steps/operator.js';
@@ -82,8 +83,9 @@ function operatorFor(world: World, yes: boolean, streams: Streams): Operator {
 function requireOperator(plan: Plan, operator: Operator, yes: boolean): void {
   if (operator.present) return;
   const needing = plan.steps.flatMap(({ kind }, index) =>
-    kind.needs.operator === 'always' ? [`step ${index + 1} (${kind.kind})`] : [],
+    needsOperator(kind, plan.bench) ? [`step ${index + 1} (${kind.kind})`] : [],
   );
   if (!yes && plan.cautions.length > 0) needing.push('its cautions');
+  if (!yes && plan.procedure.wiring.length > 0) needing.push('its wiring');
   if (needing.length > 0) throw new OperatorAbsentError(needing);
 }

@@ -5,7 +5,7 @@ import type { Clock } from '../clock/clock.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { realClock } from '../clock/real-clock.js';
 import { VirtualClock } from '../clock/virtual-clock.js';
-import type { Bench, BenchDrivers } from '../files/bench.js';
+import { type Bench, type BenchDrivers, type Post, postsOf, roleOf } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
 import { readDriver } from '../files/read-driver.js';
 import type { FileRead } from '../files/read-text.js';
@@ -30,23 +30,18 @@ export function recordedPath(path: string): string {
 
 export const vocabulary = { stepKinds, findings: findingNames };
 
-export interface DriverFiles {
-  readonly load: FileRead<Driver>;
-  readonly meter?: FileRead<Driver>;
-}
+/** The driver of each post of a bench, the load's first. */
+export type DriverFiles = readonly { readonly post: Post; readonly file: FileRead<Driver> }[];
 
 /** A bench gives an instrument a part that its driver is not for. */
 export class WrongRoleError extends RailproofError {
   readonly code = 'WRONG_ROLE';
   readonly exitCode = exitCodes.badFile;
 
-  constructor(bench: string, role: string, driver: Driver) {
-    super(
-      `${bench}: instruments.${role}: ${driver.name} is a driver for a ${driver.role}, not for a ${role}`,
-      {
-        advice: '`railproof drivers` lists the shipped ones with their roles',
-      },
-    );
+  constructor(bench: string, post: Post, driver: Driver) {
+    super(`${bench}: ${post}: ${driver.name} is a driver for a ${driver.role}, not for a ${roleOf(post)}`, {
+      advice: '`railproof drivers` lists the shipped ones with their roles',
+    });
   }
 }
 
@@ -56,21 +51,28 @@ export class WrongRoleError extends RailproofError {
  */
 export async function readBenchDrivers(bench: FileRead<Bench>): Promise<DriverFiles> {
   const where = { relativeTo: dirname(bench.path), shipped: shipped.drivers };
-  const read = async (role: keyof Bench['instruments'], name: string): Promise<FileRead<Driver>> => {
-    const driver = await readDriver(name, where);
-    if (driver.value.role !== role) throw new WrongRoleError(bench.path, role, driver.value);
-    return driver;
-  };
-  const { load, meter } = bench.value.instruments;
-  return {
-    load: await read('load', load.driver),
-    ...(meter === undefined ? {} : { meter: await read('meter', meter.driver) }),
-  };
+  const files: DriverFiles[number][] = [];
+  for (const [post, place] of postsOf(bench.value)) {
+    const file = await readDriver(place.driver, where);
+    if (file.value.role !== roleOf(post)) throw new WrongRoleError(bench.path, post, file.value);
+    files.push({ post, file });
+  }
+  return files;
 }
 
 /** What was read of them, without where it stood. */
-export function planDrivers({ load, meter }: DriverFiles): BenchDrivers {
-  return { load: load.value, meter: meter?.value };
+export function planDrivers(files: DriverFiles): BenchDrivers {
+  const at = (post: Post): Driver | undefined => files.find((one) => one.post === post)?.file.value;
+  const load = at('load');
+  if (load === undefined) throw new Error('a bench has a load');
+  const places = files.filter(({ post }) => post.startsWith('meter-')).map(({ file }) => file.value);
+  return {
+    load,
+    meter: at('meter'),
+    scanner: at('scanner'),
+    thermometer: at('thermometer'),
+    ...(places.length === 0 ? {} : { places }),
+  };
 }
 
 /** How a bench is reached, and the time that passes there. */
@@ -86,7 +88,7 @@ export interface World {
  * simulated or replayed, time is virtual: an hour passes in a moment.
  */
 export async function worldOf(bench: Bench, drivers: BenchDrivers): Promise<World> {
-  const kinds = Object.values(bench.instruments).map((place) => place.connection.kind);
+  const kinds = postsOf(bench).map(([, place]) => place.connection.kind);
   const clock = kinds.every((kind) => kind === 'simulated' || kind === 'replay')
     ? new VirtualClock(realClock.wall())
     : realClock;

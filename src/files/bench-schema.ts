@@ -1,29 +1,11 @@
 import { z } from 'zod';
 import type { Bench } from './bench.js';
-import { choice, line, quantity, readFromText } from './building-blocks.js';
+import { choice, line, quantity } from './building-blocks.js';
 import { withoutHeader } from './camel-keys.js';
-import { addressForms, AddressError, parseAddress } from './connection-address.js';
 import { headers } from './file-kind.js';
-import { found } from './plain-words.js';
+import { groupProblems, groupSchema } from './group-schema.js';
+import { instrumentPlace as place } from './instrument-place.js';
 import { simulationSchema } from './simulation-schema.js';
-
-const connection = readFromText(
-  {
-    description: 'The way to the instrument.',
-    pattern: '^(?:tcp://.+:[0-9]+|serial:.+|replay:.+|simulated:.*)$',
-    examples: [...addressForms],
-  },
-  `an address is needed: ${addressForms[0]}`,
-  (value) => {
-    if (typeof value === 'string') return parseAddress(value);
-    throw new AddressError(`${found(value)}; an address is needed: ${addressForms[0]}`, String(value));
-  },
-);
-
-const place = z.strictObject({
-  driver: line('The name of a shipped driver, or the path of a driver file from here.').min(1),
-  connection,
-});
 
 /** A bench file, as an editor sees it and as the program reads it. */
 export const benchSchema: z.ZodType<Bench> = z
@@ -34,6 +16,10 @@ export const benchSchema: z.ZodType<Bench> = z
       .strictObject({
         load: place.describe('The electronic load.'),
         meter: place.describe('The meter, its probes at the module.').exactOptional(),
+        scanner: place
+          .describe('A scanner that puts the meter across the places of a group.')
+          .exactOptional(),
+        thermometer: place.describe('A thermometer that touches the module.').exactOptional(),
       })
       .describe('The instruments, by their part in the work.'),
     leads: z
@@ -49,8 +35,19 @@ export const benchSchema: z.ZodType<Bench> = z
         voltage: quantity('voltage', 'The highest voltage.', { above: 0 }),
         current: quantity('current', 'The highest current.', { above: 0 }),
         power: quantity('power', 'The highest power.', { above: 0 }),
+        temperature: quantity('temperature', 'The highest temperature of a module.').exactOptional(),
       })
       .describe('Never exceeded, whatever a procedure asks.'),
+    ambient: z
+      .strictObject({
+        temperature: quantity('temperature', 'What the surroundings have.'),
+        uncertainty: quantity('temperature-difference', 'How far off that may be (half-width).', {
+          least: 0,
+        }).prefault('2 K'),
+      })
+      .exactOptional()
+      .describe("The surroundings; a module's rise is above them."),
+    group: groupSchema.exactOptional(),
     simulation: simulationSchema.exactOptional(),
   })
   .meta({
@@ -69,6 +66,7 @@ export const benchSchema: z.ZodType<Bench> = z
     if (bench['voltage-from'] === 'load-terminals' && bench.leads === undefined) {
       complain(['leads'], 'missing; the leads must be known when the voltage is read at the load terminals');
     }
+    for (const { path, message } of groupProblems(bench)) complain([...path], message);
     for (const [role, instrument] of Object.entries(bench.instruments)) {
       if (instrument.connection.kind === 'simulated' && bench.simulation === undefined) {
         const message =

@@ -1,11 +1,16 @@
-import type { Amperes, Ohms, Volts, Watts } from '../quantity/quantity.js';
-import type { Driver } from './driver.js';
+import type { Amperes, Celsius, Kelvins, Ohms, Volts, Watts } from '../quantity/quantity.js';
+import type { Driver, Role } from './driver.js';
 import type { Simulation } from './simulation-section.js';
 
 /** A bench file: the instruments, leads and hard limits of one work place. */
 export interface Bench {
   readonly name: string;
-  readonly instruments: { readonly load: InstrumentPlace; readonly meter?: InstrumentPlace };
+  readonly instruments: {
+    readonly load: InstrumentPlace;
+    readonly meter?: InstrumentPlace;
+    readonly scanner?: InstrumentPlace;
+    readonly thermometer?: InstrumentPlace;
+  };
   /** There and back; used when nothing senses at the module. 0 ± 0 where the file gives none. */
   readonly leads: { readonly resistance: Ohms; readonly uncertainty: Ohms };
   readonly voltageFrom: 'meter-at-module' | 'load-terminals';
@@ -14,15 +19,74 @@ export interface Bench {
     readonly voltage: Volts;
     readonly current: Amperes;
     readonly power: Watts;
+    /** Of what the thermometer touches. */
+    readonly temperature?: Celsius;
   };
+  /** The surroundings of the module, for its rise above them. */
+  readonly ambient?: { readonly temperature: Celsius; readonly uncertainty: Kelvins };
+  /** How the modules of a group or of a stack are told apart. */
+  readonly group?: Group;
   /** What is really there, on a bench with simulated instruments. */
   readonly simulation?: Simulation;
 }
 
-/** The driver of each instrument of a bench. */
+/** The places of a circuit of several modules, in the order of the circuit, and how a voltage is read at each. */
+export interface Group {
+  /** A scanner puts the meter across each place; or each place has a meter; or the operator moves the one there is. */
+  readonly measuredBy: 'scanner' | 'meters' | 'operator';
+  /** The scanner's channel that puts the meter across the output of the whole. */
+  readonly outputChannel?: number;
+  readonly places: readonly GroupPlace[];
+}
+
+export interface GroupPlace {
+  /** In series with the module: its measured value, and how far off that may be (half-width). */
+  readonly ballast?: { readonly resistance: Ohms; readonly uncertainty: Ohms };
+  /** The scanner's channel that puts the meter across the ballast (parallel) or the module's output (series). */
+  readonly channel?: number;
+  /** A meter of its own across the same. */
+  readonly meter?: InstrumentPlace;
+}
+
+/** The driver of each instrument of a bench; `places` are those of the places' own meters, in their order. */
 export interface BenchDrivers {
   readonly load: Driver;
   readonly meter?: Driver | undefined;
+  readonly scanner?: Driver | undefined;
+  readonly thermometer?: Driver | undefined;
+  readonly places?: readonly Driver[] | undefined;
+}
+
+/** The part that an instrument has on a bench: `meter-2` is the own meter of the second place. */
+export type Post = 'load' | 'meter' | 'scanner' | 'thermometer' | `meter-${number}`;
+
+/** Every instrument of a bench with its post, the load first. */
+export function postsOf({ instruments, group }: Bench): readonly (readonly [Post, InstrumentPlace])[] {
+  const { load, meter, scanner, thermometer } = instruments;
+  const others = [
+    ['meter', meter],
+    ['scanner', scanner],
+    ['thermometer', thermometer],
+    ...(group?.places ?? []).map((place, index) => [`meter-${index + 1}`, place.meter] as const),
+  ] as const;
+  return [
+    ['load', load],
+    ...others.flatMap(([post, place]): [Post, InstrumentPlace][] =>
+      place === undefined ? [] : [[post, place]],
+    ),
+  ];
+}
+
+/** The role that a driver must have for a post. */
+export function roleOf(post: Post): Role {
+  return post === 'load' || post === 'scanner' || post === 'thermometer' ? post : 'meter';
+}
+
+/** The driver at a post; undefined where the bench has none there. */
+export function driverAt(drivers: BenchDrivers, post: Post): Driver | undefined {
+  if (post === 'load' || post === 'meter' || post === 'scanner' || post === 'thermometer')
+    return drivers[post];
+  return drivers.places?.[Number(post.slice('meter-'.length)) - 1];
 }
 
 export interface InstrumentPlace {

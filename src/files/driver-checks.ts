@@ -31,6 +31,7 @@ export const placeholderOf: Readonly<Record<string, string>> = {
 const mustSend: Readonly<Record<Role, readonly string[]>> = {
   load: ['make-safe', 'input-on', 'input-off', 'set-current'],
   meter: [],
+  thermometer: [],
   scanner: ['open-all', 'close-channel'],
   source: ['make-safe', 'output-on', 'output-off'],
 };
@@ -109,11 +110,17 @@ function* readingKinds({ readings }: DriverFile): Generator<Complaint> {
   for (const [name, reading] of Object.entries(readings)) {
     const path = ['readings', name];
     const due = isNumber(name) ? readingDimensions[name] : undefined;
-    if (due !== undefined && reading.kind === 'flag') {
+    if (due !== undefined && reading.kind !== 'number') {
       yield { path, message: `the ${name} is a number; give its 'unit' in place of 'true-when'` };
     }
-    if (name.endsWith('-state') && reading.kind === 'number') {
-      yield { path, message: `the ${name} is a yes or a no; give 'true-when' in place of 'unit'` };
+    if (isFlag(name) && reading.kind !== 'flag') {
+      yield { path, message: `${name} is a yes or a no; give 'true-when'` };
+    }
+    if ((name === 'closed-channel') !== (reading.kind === 'channel')) {
+      yield {
+        path,
+        message: "the closed-channel is a channel's number; give 'channel-in', which no other reading has",
+      };
     }
     if (due !== undefined && reading.kind === 'number' && reading.dimension !== due) {
       const message = `the unit is that of ${dimensionWords[reading.dimension].name}; this reading is ${dimensionWords[due].name}`;
@@ -139,6 +146,10 @@ function stray(placeholder: string, due: string | undefined): string {
       ? '; none is filled in here'
       : didYouMean(placeholder, [due]) || `; ${due} is known here`;
   return `unknown placeholder ${shown(placeholder)}${hint}`;
+}
+
+function isFlag(name: string): boolean {
+  return name.endsWith('-state') || name.startsWith('measures-');
 }
 
 function isNumber(name: string): name is keyof typeof readingDimensions {

@@ -54,21 +54,28 @@ const reading = z
       'value',
     ]).exactOptional(),
     'true-when': regularExpression('The answer is yes when the reply looks like this.').exactOptional(),
+    'channel-in': regularExpression(
+      "Finds the number of the scanner's closed channel, in a group named value; none is closed where it finds none.",
+      ['value'],
+    ).exactOptional(),
   })
   .superRefine((value, context) => {
     const complain = (path: string[], text: string): void => {
       context.addIssue({ code: 'custom', path, message: text });
     };
-    if ((value.unit === undefined) === (value['true-when'] === undefined)) {
+    const kinds = [value.unit, value['true-when'], value['channel-in']].filter((each) => each !== undefined);
+    if (kinds.length !== 1) {
       complain(
         [],
-        "a reading has either a 'unit', when it is a number, or 'true-when', when it is a yes or a no",
+        "a reading has a 'unit', when it is a number, or 'true-when', when it is a yes or a no, or 'channel-in', when it is a scanner's channel",
       );
     } else if (value.unit === undefined && value.pattern !== undefined) {
       complain(['pattern'], "only a reading with a 'unit' has a pattern");
     }
   })
-  .transform(({ ask: asked, unit: dimension, pattern, 'true-when': trueWhen }): DriverReading => {
+  .transform((value): DriverReading => {
+    const { ask: asked, unit: dimension, pattern, 'true-when': trueWhen, 'channel-in': channelIn } = value;
+    if (channelIn !== undefined) return { kind: 'channel', ask: asked, channelIn };
     if (trueWhen !== undefined) return { kind: 'flag', ask: asked, trueWhen };
     // The refinement above lets no reading through that has neither.
     if (dimension === undefined) return z.NEVER;
@@ -94,7 +101,10 @@ export const driverSchema: z.ZodType<Driver> = z
   .strictObject({
     railproof: z.literal(headers.driver).describe('The kind of file and the version of its format.'),
     name: name('What the driver is called: how its instruments are spoken to, never who made them.'),
-    role: choice(['load', 'meter', 'scanner', 'source'], 'The part of these instruments in the work.'),
+    role: choice(
+      ['load', 'meter', 'scanner', 'thermometer', 'source'],
+      'The part of these instruments in the work.',
+    ),
     summary: line('Which instruments this is for, in a sentence.').min(1),
     wire: camelKeys(
       z.strictObject({

@@ -27,5 +27,7 @@ export const readingWords: Readonly<Record<string, string>> = {
   temperature: 'How the temperature is asked for and read.',
   'input-state': 'How to ask whether the input is on.',
   'output-state': 'How to ask whether the output is on.',
+  'measures-voltage': 'How to ask whether the meter is set to dc voltage.',
+  'measures-resistance': 'How to ask whether the meter is set to resistance.',
   'closed-channel': 'How to ask which channel is closed.',
 };

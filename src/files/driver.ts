@@ -1,6 +1,6 @@
 import type { Amperes, Dimension, Ratio, Seconds, Volts, Watts } from '../quantity/quantity.js';
 
-export type Role = 'load' | 'meter' | 'scanner' | 'source';
+export type Role = 'load' | 'meter' | 'scanner' | 'thermometer' | 'source';
 
 /** A driver file: how one family of instruments is spoken to. */
 export interface Driver {
@@ -40,7 +40,10 @@ export interface Wire {
   readonly timeout: Seconds;
 }
 
-/** A reading is a number with a unit, or a yes or no. All of `ask` is sent; the last one is answered. */
+/**
+ * A reading is a number with a unit, a yes or no, or the number of a scanner's channel (null where none is
+ * closed). All of `ask` is sent; the last one is answered.
+ */
 export type DriverReading =
   | {
       readonly kind: 'number';
@@ -48,7 +51,9 @@ export type DriverReading =
       readonly dimension: Dimension;
       readonly pattern?: RegExp;
     }
-  | { readonly kind: 'flag'; readonly ask: readonly string[]; readonly trueWhen: RegExp };
+  | { readonly kind: 'flag'; readonly ask: readonly string[]; readonly trueWhen: RegExp }
+  /** `channelIn` finds the number in a group named `value`; a reply without one means that none is closed. */
+  | { readonly kind: 'channel'; readonly ask: readonly string[]; readonly channelIn: RegExp };
 
 /** Half-widths of the promised error: a part of the reading plus a fixed part, in the reading's unit. */
 export interface Accuracy {
@@ -64,14 +69,19 @@ export const operationsOf = {
     must: ['make-safe', 'input-on', 'input-off', 'current-mode', 'set-current'],
     may: ['voltage-mode', 'set-voltage', 'protect-current', 'protect-voltage'],
   },
-  meter: { must: ['make-safe'], may: [] },
+  meter: { must: ['make-safe'], may: ['measure-voltage', 'measure-resistance'] },
   scanner: { must: ['make-safe', 'close-channel', 'open-all'], may: [] },
+  thermometer: { must: [], may: [] },
   source: { must: ['make-safe', 'output-on', 'output-off'], may: ['set-voltage', 'set-current'] },
 } as const satisfies Record<Role, { must: readonly string[]; may: readonly string[] }>;
 
 export const readingsOf = {
   load: { must: ['voltage', 'current', 'input-state'], may: ['power', 'temperature'] },
-  meter: { must: ['voltage'], may: ['resistance', 'temperature', 'current'] },
+  meter: {
+    must: ['voltage'],
+    may: ['resistance', 'temperature', 'current', 'measures-voltage', 'measures-resistance'],
+  },
   scanner: { must: [], may: ['closed-channel'] },
+  thermometer: { must: ['temperature'], may: [] },
   source: { must: [], may: ['voltage', 'current', 'output-state'] },
 } as const satisfies Record<Role, { must: readonly string[]; may: readonly string[] }>;

@@ -22,7 +22,14 @@ function besideBench(bench: Bench, folder: string): Bench {
     role,
     inFolder(place, folder),
   ]);
-  return { ...bench, instruments: Object.fromEntries(instruments) as Bench['instruments'] };
+  const places = bench.group?.places.map((place) =>
+    place.meter === undefined ? place : { ...place, meter: inFolder(place.meter, folder) },
+  );
+  return {
+    ...bench,
+    instruments: Object.fromEntries(instruments) as Bench['instruments'],
+    ...(bench.group === undefined || places === undefined ? {} : { group: { ...bench.group, places } }),
+  };
 }
 
 function inFolder(place: InstrumentPlace, folder: string): InstrumentPlace {

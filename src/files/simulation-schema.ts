@@ -55,7 +55,7 @@ const simulatedModule = camelKeys(
     noise: quantity('voltage', 'Standard deviation of the noise that a meter sees.', { least: 0 }).prefault(
       '0 V',
     ),
-    ballast: quantity('resistance', 'In series with the module; in a parallel circuit only.', {
+    ballast: quantity('resistance', 'In series with the module, in a group or a stack.', {
       least: 0,
     }).prefault('0 mΩ'),
     'reverse-diode': z.boolean().default(false).describe('Whether one is across its output; in series only.'),
@@ -113,8 +113,14 @@ const faultNames = [
   'meter-silent',
   'load-lost',
   'meter-lost',
+  'scanner-silent',
+  'scanner-lost',
+  'scanner-stuck',
   'module-dead',
   'reversed',
+  'meter-wrong-mode',
+  'probes-reversed',
+  'lead-broken',
 ] as const;
 
 /** The `simulation` section of a bench file. */
@@ -131,7 +137,7 @@ export const simulationSchema: z.ZodType<Simulation> = z
         load: simulatedInstrument.exactOptional().describe('The load.'),
         meter: simulatedInstrument.exactOptional().describe('The meter.'),
         scanner: simulatedInstrument.exactOptional().describe('The scanner.'),
-        source: simulatedInstrument.exactOptional().describe('The source.'),
+        thermometer: simulatedInstrument.exactOptional().describe('The thermometer.'),
       })
       .default({})
       .describe('Errors of the instruments; those left out are drawn within the accuracy of the driver.'),
@@ -144,6 +150,7 @@ export const simulationSchema: z.ZodType<Simulation> = z
         z.strictObject({
           at: quantity('time', 'When, from the start.', { least: 0 }),
           what: choice(faultNames, 'What happens.'),
+          of: name('The module it happens to.', ['K2']).exactOptional(),
         }),
       )
       .max(100)

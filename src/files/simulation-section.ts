@@ -23,7 +23,7 @@ export interface SimulatedModule {
   readonly unsteadyAbove?: Amperes;
   /** Standard deviation of the output's own noise, as a meter's reading sees it. */
   readonly noise: Volts;
-  /** Parallel only. */
+  /** In series with it, in a group or a stack. */
   readonly ballast: Ohms;
   /** Series only. */
   readonly reverseDiode: boolean;
@@ -64,9 +64,22 @@ export interface SimulatedError {
 }
 
 export type FaultName =
-  'load-silent' | 'meter-silent' | 'load-lost' | 'meter-lost' | 'module-dead' | 'reversed';
+  | `${'load' | 'meter' | 'scanner'}-${'silent' | 'lost'}`
+  | 'module-dead'
+  /** The load's and the meter's leads, swapped at the module. */
+  | 'reversed'
+  /** The channel that is closed stays closed, whatever the scanner is told and whatever it says. */
+  | 'scanner-stuck'
+  /** Someone has set the meter to resistance at its panel; it stays so until it is told otherwise. */
+  | 'meter-wrong-mode'
+  /** The probes across a place's ballast or output, swapped. */
+  | 'probes-reversed'
+  /** One of the meter's own leads is broken: it reads nothing, and an open circuit in resistance. */
+  | 'lead-broken';
 
 export interface SimulatedFault {
   readonly at: Seconds;
   readonly what: FaultName;
+  /** The module it happens to; the first, or every one of them, when left out. */
+  readonly of?: string;
 }

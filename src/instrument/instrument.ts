@@ -9,7 +9,7 @@ import { InstrumentComplainedError, NotInDriverError, WrongInstrumentError } fro
 import { noticeText, type Notice, type OnNotice } from './notice.js';
 import { fillMessage, type OperationValues } from './message.js';
 import { tellMakeSafe } from './make-safe.js';
-import { readFlag, readNumber, type About } from './reading.js';
+import { readChannel, readFlag, readNumber, type About } from './reading.js';
 import type { ScpiError } from './scpi-error.js';
 import type { Measurement } from './scpi-number.js';
 import { Turns } from './turns.js';
@@ -120,6 +120,14 @@ export class Instrument {
    */
   flag(reading: string): Promise<boolean> {
     return this.#turns.take(() => this.#reply(this.#wanted(reading, 'flag'), readFlag));
+  }
+
+  /**
+   * A scanner's closed channel; null where none is.
+   * @throws as `read`
+   */
+  channel(reading: string): Promise<number | null> {
+    return this.#turns.take(() => this.#reply(this.#wanted(reading, 'channel'), readChannel));
   }
 
   /** Hands the instrument back to its front panel, as the driver says. */

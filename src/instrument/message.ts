@@ -19,6 +19,7 @@ export function fillMessage(message: string, values: OperationValues): string {
   return message.replace(placeholder, (_, name: keyof OperationValues) => {
     const value = values[name];
     if (value === undefined) throw new RangeError(`"${message}" needs a value for {${name}}.`);
-    return formatScpiNumber(value);
+    // A channel is a name made of digits: 101, never 1.01E+2.
+    return name === 'channel' ? String(Math.trunc(value)) : formatScpiNumber(value);
   });
 }

@@ -34,6 +34,23 @@ export function readNumber(
 }
 
 /**
+ * The number of the channel in a reply; null where the reply names none.
+ * @throws ReplyNotUnderstoodError
+ */
+export function readChannel(
+  reply: string,
+  reading: Extract<DriverReading, { kind: 'channel' }>,
+  about: About,
+): number | null {
+  const expected = `a reply in which /${reading.channelIn.source}/ finds a channel`;
+  if (reply.length > longest) throw new ReplyNotUnderstoodError({ ...about, reply, expected });
+  const value = reading.channelIn.exec(reply.trim())?.groups?.['value'];
+  if (value === undefined) return null;
+  if (!/^\d{1,6}$/.test(value)) throw new ReplyNotUnderstoodError({ ...about, reply, expected });
+  return Number(value);
+}
+
+/**
  * Yes or no. Yes is what the driver says; no must be said as well (`0`, `OFF`, `FALSE` or `NO`, alone or at
  * the end): a reply that makes no sense must never stand for "the input is off".
  * @throws ReplyNotUnderstoodError

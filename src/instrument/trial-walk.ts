@@ -8,7 +8,7 @@ import { harmlessValues, whyLeftOut } from './harmless.js';
 import { isIdentityFor } from './identity.js';
 import { tellMakeSafe } from './make-safe.js';
 import { fillMessage } from './message.js';
-import { readFlag, readNumber } from './reading.js';
+import { readChannel, readFlag, readNumber } from './reading.js';
 import {
   InstrumentSilentError,
   OutOfStepError,
@@ -184,6 +184,7 @@ export class TrialWalk {
   #meaning(reply: string, reading: DriverReading, question: string): string {
     const about = { address: this.#dialogue.address, question };
     if (reading.kind === 'flag') return readFlag(reply, reading, about) ? 'yes' : 'no';
+    if (reading.kind === 'channel') return String(readChannel(reply, reading, about) ?? 'none');
     return measured(readNumber(reply, reading, about));
   }
 

@@ -56,12 +56,16 @@ export interface StepBegan {
 }
 
 /**
- * What a point is for: `idle` input off; `ramp` on the way up; `start`, `climb`, `halve` and `return`
- * belong to a search; `steadiness` looks for the first unsteady current; `overload` is watched past the limit; `recovery` is after it.
+ * What a point is for: `idle` input off; `ramp` on the way up, `down` on the way back; `start`, `climb`,
+ * `halve` and `return` belong to a search; `steadiness` looks for the first unsteady current; `overload` is
+ * watched past the limit; `recovery` is after it; `trace` holds a voltage; `soak` is one look of a long hold;
+ * `share` and `stack` read every place of a circuit; `proof` shows that what measures is where it should be;
+ * `leads-apart`, `leads-together`, `discharge` and `earth` belong to the check of the isolation.
  */
 export const phases = [
   'idle',
   'ramp',
+  'down',
   'start',
   'climb',
   'halve',
@@ -69,15 +73,32 @@ export const phases = [
   'steadiness',
   'overload',
   'recovery',
+  'trace',
+  'soak',
+  'share',
+  'stack',
+  'proof',
+  'leads-apart',
+  'leads-together',
+  'discharge',
+  'earth',
 ] as const;
 export type Phase = (typeof phases)[number];
+
+/** What the load was set to; nothing where its input is off. */
+export interface SetPoint {
+  readonly current?: Amperes;
+  readonly voltage?: Volts;
+}
 
 export interface PointBegan {
   readonly event: 'point-began';
   readonly step: number;
   readonly point: number;
   readonly phase: Phase;
-  readonly set: { readonly current?: Amperes; readonly voltage?: Volts };
+  readonly set: SetPoint;
+  /** The module that the point is about, where it is about one of several: whose input was taken away, whose earth is measured. */
+  readonly of?: string;
 }
 
 export interface ReadingTaken {
@@ -85,9 +106,11 @@ export interface ReadingTaken {
   readonly step: number;
   readonly point: number;
   readonly sample: number;
-  /** The instrument's role on the bench. */
+  /** The instrument's post on the bench. */
   readonly of: string;
   readonly what: string;
+  /** Where its probes were, when not at their usual place: `ballast-of-K1`, `output-of-K1`, `earth-of-K1`, `leads`. */
+  readonly at?: string;
   /** Null when the instrument said that it has no value. */
   readonly value: number | null;
   readonly problem?: 'overload' | 'not-a-number';

@@ -1,6 +1,6 @@
 import { writeFileSync } from 'node:fs';
 import { stringify } from 'csv-stringify/sync';
-import type { PointBegan } from './journal-event.js';
+import type { PointBegan, ReadingTaken, TimedEvent } from './journal-event.js';
 import { checkJournal, readJournal } from './journal-reader.js';
 import { replaceFileBy, type RunFolder } from './run-folder.js';
 
@@ -17,12 +17,17 @@ const columns = [
   'load voltage (V)',
   'load current (A)',
   'temperature (°C)',
+  'voltage elsewhere (V)',
+  'resistance (Ohm)',
+  'probes at',
 ] as const;
 
 const columnOf: Readonly<Record<string, (typeof columns)[number]>> = {
   'meter voltage': 'meter voltage (V)',
   'load voltage': 'load voltage (V)',
   'load current': 'load current (A)',
+  'thermometer temperature': 'temperature (°C)',
+  'meter resistance': 'resistance (Ohm)',
   'meter temperature': 'temperature (°C)',
   'load temperature': 'temperature (°C)',
 };
@@ -33,7 +38,8 @@ const batchSize = 500;
 
 /**
  * Writes readings.csv (RFC 4180, units in the header) from the journal: one row for each sample, which
- * is all that was read at one moment. Empty cells were not read, or the instrument had no value.
+ * is all that was read at one moment; what was read elsewhere than at the usual place stands before it, in a
+ * row for each place. Empty cells were not read, or the instrument had no value.
  * Only a batch of rows is ever in memory.
  * @throws RecordWriteError, NoRecordError
  */
@@ -68,6 +74,10 @@ function eachSample(journal: string, visit: (row: Row) => void): void {
       point = event;
     }
     if (event.event !== 'reading' || point === undefined) return;
+    if (event.at !== undefined) {
+      visit(rowElsewhere(event, kind, point));
+      return;
+    }
     if (row?.sample !== event.sample) {
       finish();
       row = rowOf(event.t, kind, point, event.sample);
@@ -76,6 +86,17 @@ function eachSample(journal: string, visit: (row: Row) => void): void {
     if (column !== undefined && event.value !== null) row[column] = event.value;
   });
   finish();
+}
+
+/** A reading with the probes not at their usual place has a row of its own, which says where they were. */
+function rowElsewhere(reading: ReadingTaken & Pick<TimedEvent, 't'>, kind: string, point: PointBegan): Row {
+  const { t, sample, at = '', what, value } = reading;
+  const column = what === 'resistance' ? 'resistance (Ohm)' : 'voltage elsewhere (V)';
+  return {
+    ...rowOf(t, kind, point, sample),
+    'probes at': at,
+    ...(value === null ? {} : { [column]: value }),
+  };
 }
 
 function rowOf(t: number, kind: string, point: PointBegan, sample: number): Row {

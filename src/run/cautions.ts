@@ -1,3 +1,4 @@
+import type { UnderTest } from '../steps/under-test.js';
 import type { Module } from '../files/module.js';
 import type { CautionName, Procedure } from '../files/procedure.js';
 
@@ -16,15 +17,24 @@ export const cautionTexts: Readonly<Record<CautionName, string>> = {
 };
 
 /**
- * What must be acknowledged for a procedure on a module: what the procedure names, and what the module's own
- * file tells whatever the procedure forgot: that it is fed from the mains, that its earth was worked on.
+ * What must be acknowledged for a procedure on what is connected: what the procedure names, and what the
+ * modules' own files tell whatever the procedure forgot: that one is fed from the mains, that its earth was
+ * worked on; and that a stack floats.
  */
-export function cautionsFor(procedure: Procedure, module: Module): readonly CautionName[] {
+export function cautionsFor(
+  procedure: Procedure,
+  { circuit, modules }: Pick<UnderTest, 'circuit' | 'modules'>,
+): readonly CautionName[] {
   return [
     ...new Set([
-      ...(module.input === 'mains' ? (['mains'] as const) : []),
+      ...(modules.some(({ input }) => input === 'mains') ? (['mains'] as const) : []),
       ...procedure.cautions,
-      ...(module.changes.some(({ what }) => /\bearth/i.test(what)) ? (['earth-link-removed'] as const) : []),
+      ...(circuit === 'series' ? (['floating-outputs'] as const) : []),
+      ...(modules.some(earthWasWorkedOn) ? (['earth-link-removed'] as const) : []),
     ]),
   ];
+}
+
+function earthWasWorkedOn({ changes }: Module): boolean {
+  return changes.some(({ what }) => /\bearth/i.test(what));
 }

@@ -98,6 +98,12 @@ function noteTrip({ journal }: Performance, trip: GuardTrippedError): void {
 
 async function begin({ plan, bench, journal, operator, signal }: Performance): Promise<void> {
   await checkInputIsOff(bench);
+  const { wiring } = plan.procedure;
+  if (wiring.length > 0) {
+    const acknowledged = await operator.acknowledge('wiring', wiring.join('\n'), signal);
+    if (acknowledged === 'refused') throw new StoppedByOperator('the wiring was not acknowledged');
+    journal.append({ event: 'caution', name: 'wiring', by: acknowledged });
+  }
   for (const caution of plan.cautions) {
     signal.throwIfAborted();
     const acknowledged = await operator.acknowledge(caution, cautionTexts[caution], signal);
@@ -106,35 +112,39 @@ async function begin({ plan, bench, journal, operator, signal }: Performance): P
     journal.append({ event: 'caution', name: caution, by: acknowledged });
   }
   await bench.load.prepare();
-  if (plan.steps.some((step) => step.kind.needs.liveModule)) {
-    const volts = await checkOpenCircuitVoltage(bench, plan.module.rated.voltage);
-    const read = formatQuantity(volts, 'voltage', { significant: 4 });
-    journal.append({ event: 'notice', text: `before anything was switched on the module read ${read}` });
-  }
 }
 
-async function goThrough({
-  plan,
-  bench,
-  journal,
-  operator,
-  clock,
-  signal,
-  watch,
-}: Performance): Promise<void> {
+/** The last look before the first step that lets a current flow; a step before it may have unplugged the module. */
+async function lookAtVoltage({ plan, bench, journal }: Performance): Promise<void> {
+  const volts = await checkOpenCircuitVoltage(bench, plan.underTest.rated.voltage);
+  const read = formatQuantity(volts, 'voltage', { significant: 4 });
+  journal.append({ event: 'notice', text: `before anything was switched on the module read ${read}` });
+}
+
+async function goThrough(performance: Performance): Promise<void> {
+  const { plan, bench, journal, operator, clock, signal, watch } = performance;
   const known = { ...plan.known };
   const tried: Tried = {};
-  const limits = { ...plan.ceilings, ratedVoltage: plan.module.rated.voltage };
+  const limits = {
+    ...plan.ceilings,
+    ratedVoltage: plan.underTest.rated.voltage,
+    temperature: plan.bench.limits.temperature,
+  };
+  let looked = false;
   for (const [index, planned] of plan.steps.entries()) {
     signal.throwIfAborted();
     const step = index + 1;
+    if (planned.kind.needs.liveModule && !looked) {
+      await lookAtVoltage(performance);
+      looked = true;
+    }
     watch.stepBegan(step, planned.kind.kind, planned.summary);
     journal.append({ event: 'step-began', step, kind: planned.kind.kind });
     await planned.kind.perform(planned.parameters, {
       step,
       bench,
       limits,
-      module: plan.module,
+      underTest: plan.underTest,
       journal,
       clock,
       signal,

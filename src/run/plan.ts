@@ -7,14 +7,15 @@ import { formatQuantity } from '../quantity/format-quantity.js';
 import type { QuantityOrShare, Ratio, ReferenceName, Seconds } from '../quantity/quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
 import type { Known, StepKind } from '../steps/step-kind.js';
+import type { UnderTest } from '../steps/under-test.js';
 import { cautionsFor } from './cautions.js';
+import { circuitProblems, needProblems, underTestOf } from './plan-circuit.js';
 
 /** A procedure that fits its module and its bench. */
 export interface Plan {
   readonly procedure: Procedure;
   readonly bench: Bench;
-  readonly modules: readonly Module[];
-  readonly module: Module;
+  readonly underTest: UnderTest;
   readonly drivers: BenchDrivers;
   readonly ceilings: Ceilings;
   readonly steps: readonly PlanStep[];
@@ -51,8 +52,8 @@ export class PlanError extends RailproofError {
 const aboveNameplate: Ratio = 0.03;
 
 /**
- * Checks everything that can be known before an instrument is touched: that there is one module, that
- * references are to something measured earlier, that what shall rise does, that currents and powers fit the
+ * Checks everything that can be known before an instrument is touched: that the modules are as many as the
+ * circuit has places, that the bench can do and read what the steps need, that references are to something measured earlier, that what shall rise does, that currents and powers fit the
  * bench and the load, that the module fits the bench.
  * @throws PlanError with every problem found.
  */
@@ -63,18 +64,14 @@ export function makePlan(
   drivers: BenchDrivers,
   stepKinds: readonly StepKind[],
 ): Plan {
-  const [module, ...others] = modules;
+  const underTest = underTestOf(procedure.circuit, modules);
+  const { rated } = underTest;
   const ceilings = ceilingsOf(bench, drivers);
-  const known: Known = { 'rated-voltage': module.rated.voltage, 'rated-current': module.rated.current };
-  const problems: string[] = [];
-  if (others.length > 0) {
-    const names = others.map(({ name }) => name).join(', ');
-    const were = others.length === 1 ? 'was' : 'were';
-    problems.push(`the procedure tests one module, ${module.name}; ${names} ${were} given too`);
-  }
-  if (module.rated.voltage > ceilings.voltage.value) {
+  const known: Known = { 'rated-voltage': rated.voltage, 'rated-current': rated.current };
+  const problems: string[] = [...circuitProblems(underTest, bench)];
+  if (rated.voltage > ceilings.voltage.value) {
     problems.push(
-      `${module.name} is rated ${formatQuantity(module.rated.voltage, 'voltage')} and ` +
+      `${underTest.name} is rated ${formatQuantity(rated.voltage, 'voltage')} and ` +
         `${ceilings.voltage.setBy} allows ${formatQuantity(ceilings.voltage.value, 'voltage')}`,
     );
   }
@@ -83,15 +80,18 @@ export function makePlan(
     const kind = stepKinds.find((one) => one.kind === step.kind);
     if (kind === undefined)
       throw new Error(`step kind ${step.kind} passed the procedure's schema and is not known`);
-    problems.push(...problemsOf(step, kind, measured, known, ceilings));
+    problems.push(
+      ...problemsOf(step, kind, measured, known, ceilings),
+      ...needProblems(step, kind, underTest, bench, drivers),
+    );
     for (const name of kind.measures) measured.add(name);
     const { parameters } = step;
     return { kind, parameters, summary: kind.describe(parameters), duration: kind.duration(parameters) };
   });
   if (problems.length > 0) throw new PlanError(problems);
   const duration = steps.reduce((sum, step) => sum + step.duration, 0);
-  const cautions = cautionsFor(procedure, module);
-  return { procedure, bench, modules, module, drivers, ceilings, steps, cautions, duration, known };
+  const cautions = cautionsFor(procedure, underTest);
+  return { procedure, bench, underTest, drivers, ceilings, steps, cautions, duration, known };
 }
 
 function problemsOf(

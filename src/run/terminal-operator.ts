@@ -30,7 +30,8 @@ export class TerminalOperator implements Operator {
     text: string,
     signal: AbortSignal,
   ): Promise<Acknowledgement | 'refused'> {
-    this.#say(`\nCaution, ${caution.replaceAll('-', ' ')}: ${text}\n`);
+    const heading = caution === 'wiring' ? 'Wiring:\n' : `Caution, ${caution.replaceAll('-', ' ')}: `;
+    this.#say(`\n${heading}${text}\n`);
     if (this.#terminal.yes) {
       this.#say('Acknowledged by --yes.\n');
       return '--yes';

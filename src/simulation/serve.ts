@@ -10,7 +10,7 @@ import { LOOPBACK, serveOnTcp } from './serve-tcp.js';
 import { CannotSimulateError } from './simulation-errors.js';
 import type { VirtualBench } from './virtual-bench.js';
 
-export type ServedRole = keyof BenchDrivers;
+export type ServedRole = 'load' | 'meter';
 
 export interface ServedBench {
   /** As a bench file writes them: `tcp://127.0.0.1:5025`, `serial:<link>?baud=115200`. */

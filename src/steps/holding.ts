@@ -10,7 +10,11 @@ const slack: Amperes = 0.05;
 const gone: Ratio = 0.5;
 
 /** The module holds while its voltage stays within the sag below the open-circuit voltage, and the current flows. */
-export function holds(openCircuit: Volts, sag: Ratio, set: Amperes): (seen: Seen) => PointOutcome {
+export function holds(
+  openCircuit: Volts,
+  sag: Ratio,
+  set: Amperes,
+): (seen: Pick<Seen, 'voltage' | 'current'>) => PointOutcome {
   const least = openCircuit * (1 - sag);
   return ({ voltage, current }) => (voltage >= least && flows(set, current) ? 'held' : 'dropped');
 }

@@ -1,8 +1,9 @@
 import { LoadSwitchedOffError } from '../bench/bench-error.js';
 import { BlindSamples, guard, valueOf } from '../bench/guards.js';
 import { moduleVoltage } from '../bench/module-voltage.js';
-import type { Amperes, Seconds, Volts } from '../quantity/quantity.js';
-import type { Phase, PointOutcome } from '../record/journal-event.js';
+import type { SampleWanted, Taken } from '../bench/sample.js';
+import type { Amperes, Celsius, Seconds, Volts } from '../quantity/quantity.js';
+import type { Phase, PointOutcome, SetPoint } from '../record/journal-event.js';
 import { RunningMoments } from '../statistics/running-moments.js';
 import { flows, isGone } from './holding.js';
 import { openCircuitVoltage } from './known-voltage.js';
@@ -13,14 +14,21 @@ export interface Seen {
   readonly t: Seconds;
   /** At the module. */
   readonly voltage: Volts;
-  /** Not a number when it could not be read, which is let pass while nothing is set. */
+  /** Not a number when it could not be read, which is let pass while no current is set. */
   readonly current: Amperes;
+  /** The voltages read elsewhere than at the usual place, by where. Those that could not be read are not there. */
+  readonly taps: ReadonlyMap<string, Volts>;
+  readonly temperature: Celsius | undefined;
 }
 
 export interface PointPlan {
   readonly phase: Phase;
-  /** With a current, the load's input is on. */
-  readonly set: { readonly current?: Amperes };
+  /** With a current or a voltage, the load's input is on and in that mode. */
+  readonly set: SetPoint;
+  /** The module that the point is about, where it is about one of several. */
+  readonly of?: string;
+  /** What each sample holds besides voltage and current. */
+  readonly wanted?: SampleWanted;
   /** Wait between the set-point and the first reading. */
   readonly dwell: Seconds;
   readonly readings: number;
@@ -37,6 +45,11 @@ export interface PointSeen {
   readonly outcome: PointOutcome;
   /** Of the module's voltage. */
   readonly voltage: RunningMoments;
+  readonly current: RunningMoments;
+  /** Of what was read elsewhere, by where. */
+  readonly taps: ReadonlyMap<string, RunningMoments>;
+  /** The last that was read. */
+  readonly temperature: Celsius | undefined;
   /** Of the last sample, and of the one before where there was one. */
   readonly last: Seconds;
   readonly before: Seconds | undefined;
@@ -80,12 +93,14 @@ export class Points {
     signal.throwIfAborted();
     this.#count += 1;
     const point = this.#count;
-    journal.append({ event: 'point-began', step, point, phase: plan.phase, set: plan.set });
+    const of = plan.of === undefined ? {} : { of: plan.of };
+    journal.append({ event: 'point-began', step, point, phase: plan.phase, set: plan.set, ...of });
     if (plan.set.current !== undefined) await bench.load.setCurrent(plan.set.current, this.#openCircuit);
-    const settling = bench.instruments.map(({ driver }) => driver.settling);
+    if (plan.set.voltage !== undefined) await bench.load.setVoltage(plan.set.voltage);
+    const settling = bench.instruments.map(({ instrument }) => instrument.driver.settling);
     await clock.sleep(Math.max(plan.dwell, ...settling), signal);
     const { last, ...rest } = await this.#read(plan, point);
-    const load = await this.#loadAfter(plan.set.current, last);
+    const load = await this.#loadAfter(plan.set, last);
     journal.append({ event: 'point-ended', step, point, outcome: rest.outcome });
     return { ...rest, last: last.t, load };
   }
@@ -93,55 +108,67 @@ export class Points {
   async #read(
     plan: PointPlan,
     point: number,
-  ): Promise<Pick<PointSeen, 'outcome' | 'voltage' | 'before'> & { readonly last: Seen }> {
+  ): Promise<Omit<PointSeen, 'last' | 'load'> & { readonly last: Seen }> {
     const { clock, signal } = this.#context;
     const { current: set } = plan.set;
     const ends = plan.until ?? ((_seen, judged) => judged === 'dropped');
     const voltage = new RunningMoments();
+    const current = new RunningMoments();
+    const taps = new Map<string, RunningMoments>();
+    let temperature: Celsius | undefined;
     let last: Seen | undefined;
     for (let sample = 1; ; sample += 1) {
       if (sample > 1) await clock.sleep(plan.every ?? stagger(sample), signal);
-      const seen = await this.#sample(point, sample, set);
+      const seen = await this.#sample(point, sample, plan);
       const unread = unreadIn(seen, set);
       this.#blind.count(unread);
       if (unread !== undefined) continue;
       voltage.add(seen.voltage);
+      if (!Number.isNaN(seen.current)) current.add(seen.current);
+      for (const [at, volts] of seen.taps) momentsAt(taps, at).add(volts);
+      temperature = seen.temperature ?? temperature;
       const outcome = plan.judge(seen);
       const idle = set !== undefined && !flows(set, seen.current);
-      if (idle && !isGone(seen.voltage, this.#openCircuit)) await this.#loadAfter(set, seen);
+      if (idle && !isGone(seen.voltage, this.#openCircuit)) await this.#loadAfter(plan.set, seen);
       const before = last?.t;
       last = seen;
-      if (sample >= plan.readings || ends(seen, outcome)) return { outcome, voltage, before, last };
+      if (sample >= plan.readings || ends(seen, outcome)) {
+        return { outcome, voltage, current, taps, temperature, before, last };
+      }
     }
   }
 
-  async #sample(point: number, sample: number, setCurrent: Amperes | undefined): Promise<Seen> {
+  async #sample(point: number, sample: number, { set, wanted }: PointPlan): Promise<Seen> {
     const { bench, journal, clock, signal, limits, step, show } = this.#context;
     signal.throwIfAborted();
-    const taken = await bench.sample(({ of, what, measurement }) => {
+    const taken = await bench.sample(({ of, what, at, measurement }) => {
       const read =
         measurement.kind === 'value'
           ? { value: measurement.value }
           : { value: null, problem: measurement.kind };
-      journal.append({ event: 'reading', step, point, sample, of, what, ...read });
-    });
+      const where = at === undefined ? {} : { at };
+      journal.append({ event: 'reading', step, point, sample, of, what, ...where, ...read });
+    }, wanted);
     guard(taken, limits);
     const seen = {
       t: clock.now(),
       voltage: moduleVoltage(bench, taken),
       current: valueOf(taken, 'load', 'current'),
+      taps: tapsIn(taken),
+      temperature: temperatureIn(taken),
     };
     show({
-      ...(setCurrent === undefined ? {} : { setCurrent }),
+      ...(set.current === undefined ? {} : { setCurrent: set.current }),
+      ...(seen.temperature === undefined ? {} : { temperature: seen.temperature }),
       voltage: seen.voltage,
       current: seen.current,
     });
     return seen;
   }
 
-  /** What has become of the load's input, which was on if a current was set. */
-  async #loadAfter(set: Amperes | undefined, { voltage }: Seen): Promise<PointSeen['load']> {
-    if (set === undefined) return 'as-told';
+  /** What has become of the load's input, which was on if anything was set. */
+  async #loadAfter(set: SetPoint, { voltage }: Seen): Promise<PointSeen['load']> {
+    if (set.current === undefined && set.voltage === undefined) return 'as-told';
     const { bench, journal, signal } = this.#context;
     signal.throwIfAborted();
     if (await bench.load.isOn()) return 'as-told';
@@ -154,7 +181,31 @@ export class Points {
   }
 }
 
-function unreadIn({ voltage, current }: Seen, set: Amperes | undefined): 'voltage' | 'current' | undefined {
+function momentsAt(taps: Map<string, RunningMoments>, at: string): RunningMoments {
+  const known = taps.get(at);
+  if (known !== undefined) return known;
+  const fresh = new RunningMoments();
+  taps.set(at, fresh);
+  return fresh;
+}
+
+function tapsIn(taken: readonly Taken[]): ReadonlyMap<string, Volts> {
+  return new Map(
+    taken.flatMap(({ at, measurement }): [string, Volts][] =>
+      at !== undefined && measurement.kind === 'value' ? [[at, measurement.value]] : [],
+    ),
+  );
+}
+
+function temperatureIn(taken: readonly Taken[]): Celsius | undefined {
+  const celsius = valueOf(taken, 'thermometer', 'temperature');
+  return Number.isNaN(celsius) ? undefined : celsius;
+}
+
+function unreadIn(
+  { voltage, current }: Pick<Seen, 'voltage' | 'current'>,
+  set: Amperes | undefined,
+): 'voltage' | 'current' | undefined {
   if (Number.isNaN(voltage)) return 'voltage';
   return set !== undefined && Number.isNaN(current) ? 'current' : undefined;
 }

@@ -2,10 +2,11 @@ import type { z } from 'zod';
 import type { OpenBench } from '../bench/open-bench.js';
 import type { GuardLimits } from '../bench/guards.js';
 import type { Clock } from '../clock/clock.js';
-import type { Module } from '../files/module.js';
+import type { Circuit } from '../files/procedure.js';
 import type { Amperes, QuantityOrShare, ReferenceName, Seconds } from '../quantity/quantity.js';
 import type { JournalEvent } from '../record/journal-event.js';
 import type { Operator } from './operator.js';
+import type { UnderTest } from './under-test.js';
 
 /**
  * One kind of step: what it may be told, what it needs and how it is performed. What its readings mean is
@@ -23,6 +24,14 @@ export interface StepKind<Parameters = unknown> {
     readonly liveModule: boolean;
     /** Whether it can't be done without someone who can act; a step may still ask one who is there. */
     readonly operator: 'always' | 'never';
+    /** The circuits it makes sense for; any when left out. */
+    readonly circuits?: readonly Circuit[];
+    /** The voltage at each place of the circuit is read; where nothing else can, the operator moves the meter. */
+    readonly taps?: true;
+    /** What the drivers must say how to do, by role: `{ load: ['voltage-mode', 'set-voltage'] }`. */
+    readonly operations?: Readonly<Partial<Record<'load' | 'meter', readonly string[]>>>;
+    /** What the drivers must say how to read, by role. */
+    readonly readings?: Readonly<Partial<Record<'load' | 'meter', readonly string[]>>>;
   };
   /** Every quantity among the parameters that may refer to another, by parameter name. */
   references(parameters: Parameters): Readonly<Record<string, QuantityOrShare>>;
@@ -42,7 +51,7 @@ export interface StepContext {
   readonly step: number;
   readonly bench: OpenBench;
   readonly limits: GuardLimits;
-  readonly module: Module;
+  readonly underTest: UnderTest;
   readonly journal: { append(event: JournalEvent): void };
   readonly clock: Clock;
   /** Aborted when the run must stop; looked at between questions, never inside one. */
@@ -69,5 +78,6 @@ export interface Progress {
   readonly setCurrent?: number;
   readonly voltage?: number;
   readonly current?: number;
+  readonly temperature?: number;
   readonly note?: string;
 }

@@ -64,6 +64,7 @@ export function headerOf(parts: HeaderParts = {}): RunHeader {
         changes: [],
       },
     ],
+    circuit: 'single',
     bench: {
       name: 'nursery bench',
       leads: parts.leads ?? { resistance: 0.035, uncertainty: 0.005 },

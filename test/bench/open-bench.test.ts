@@ -5,7 +5,7 @@ describe('a bench that is opened', () => {
   it('has its instruments identified and nothing switched on', async () => {
     const { open, simulation } = await nursery();
     const bench = await open();
-    expect(bench.instruments.map(({ role, identity }) => [role, identity])).toEqual([
+    expect(bench.instruments.map(({ post, instrument }) => [post, instrument.identity])).toEqual([
       ['load', 'railproof,simulated load,K-bench,1'],
       ['meter', 'railproof,simulated meter,K-bench,1'],
     ]);

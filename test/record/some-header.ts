@@ -16,6 +16,7 @@ export const someHeader: RunHeader = {
       changes: [{ date: '2026-11-14', what: 'link from output to earth removed' }],
     },
   ],
+  circuit: 'single',
   bench: {
     name: 'nursery bench',
     leads: { resistance: 0.035, uncertainty: 0.005 },

@@ -28,7 +28,11 @@ describe('a plan', () => {
     expect(plan.duration).toBeCloseTo(5 + 21 * (0.5 + 5 * 0.1), 9);
     expect(plan.ceilings.current).toEqual({ value: 8, setBy: 'the bench' });
     expect(plan.known).toEqual({ 'rated-voltage': 15, 'rated-current': 4 });
-    expect(plan.module).toBe(plan.modules[0]);
+    expect(plan.underTest).toMatchObject({
+      circuit: 'single',
+      name: 'K1',
+      rated: { voltage: 15, current: 4 },
+    });
   });
 
   it('may refer to what a step before has measured, whose size is not known yet', async () => {
@@ -51,7 +55,7 @@ describe('a plan', () => {
         drivers,
         stepKinds,
       );
-    expect(plan().module.name).toBe('K1');
+    expect(plan().underTest.name).toBe('K1');
     expect(() => plan('K2')).toThrow('the procedure tests one module, K1; K2 was given too');
     expect(() => plan('K2', 'K3')).toThrow(
       expect.objectContaining({

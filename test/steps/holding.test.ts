@@ -14,10 +14,10 @@ describe('a module holds', () => {
     ['not when the voltage could not be read', Number.NaN, 4, 'dropped'],
     ['not when the current could not be read', 15, Number.NaN, 'dropped'],
   ])('%s', (_, voltage, current, outcome) => {
-    expect(judge({ t: 0, voltage, current })).toBe(outcome);
+    expect(judge({ voltage, current })).toBe(outcome);
   });
 
   it('at no load whatever the offset of the load', () => {
-    expect(holds(15, 0.05, 0)({ t: 0, voltage: 15, current: -0.02 })).toBe('held');
+    expect(holds(15, 0.05, 0)({ voltage: 15, current: -0.02 })).toBe('held');
   });
 });

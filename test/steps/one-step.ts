@@ -82,7 +82,7 @@ export async function stage(change: StageChange = {}): Promise<Stage> {
         step: 1,
         bench,
         limits,
-        module: k1,
+        underTest: { circuit: 'single', modules: [k1], name: 'K1', rated: k1.rated },
         journal: { append },
         clock: place.clock,
         signal: change.signal ?? new AbortController().signal,

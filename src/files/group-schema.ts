@@ -1,0 +1,73 @@
+import { z } from 'zod';
+import type { Group } from './bench.js';
+import { choice, count, quantity } from './building-blocks.js';
+import { camelKeys } from './camel-keys.js';
+import { instrumentPlace } from './instrument-place.js';
+import type { Complaint } from './yaml-document.js';
+
+const channel = (description: string) => count(description, { least: 0, most: 9999 });
+
+/** Where a person measures a resistance of milliohms with leads, a tenth is soon gone. */
+const ballast = z.strictObject({
+  resistance: quantity('resistance', 'Its measured value.', { above: 0 }),
+  uncertainty: quantity('resistance', 'How far off that may be (half-width).', { least: 0 }),
+});
+
+/** The `group` section of a bench file. */
+export const groupSchema: z.ZodType<Group> = camelKeys(
+  z.strictObject({
+    'measured-by': choice(
+      ['scanner', 'meters', 'operator'],
+      'What puts a meter across each place: a scanner, a meter of its own, or the operator who moves the one there is.',
+    ),
+    'output-channel': channel(
+      'The channel of the scanner that puts the meter across the output of the whole.',
+    ).exactOptional(),
+    places: z
+      .array(
+        z.strictObject({
+          ballast: ballast.exactOptional().describe('The resistor in series with the module.'),
+          channel: channel(
+            "The channel of the scanner that puts the meter across the ballast, or across a stacked module's output.",
+          ).exactOptional(),
+          meter: instrumentPlace.exactOptional().describe('A meter of its own, across the same.'),
+        }),
+      )
+      .min(2)
+      .max(64)
+      .describe('In the order of the circuit; the lowest of a stack first.'),
+  }),
+).describe('How the modules of a group or of a stack are told apart.');
+
+/** What no key alone can tell: whether what measures is there, and whether no channel is used twice. */
+export function* groupProblems(bench: {
+  readonly group?: Group;
+  readonly instruments: Readonly<Record<string, unknown>>;
+}): Generator<Complaint> {
+  const { group, instruments } = bench;
+  const { scanner, meter } = instruments;
+  if (scanner !== undefined && group?.measuredBy !== 'scanner') {
+    yield { path: ['instruments', 'scanner'], message: "no 'group' section says what its channels are" };
+  }
+  if (group === undefined) return;
+  const by = ['group', 'measured-by'];
+  if (group.measuredBy === 'scanner' && scanner === undefined)
+    yield { path: by, message: 'there is no scanner among the instruments' };
+  if (group.measuredBy !== 'meters' && meter === undefined)
+    yield { path: by, message: `${group.measuredBy} needs a meter among the instruments` };
+  const used = new Map<number, string>();
+  if (group.outputChannel !== undefined) used.set(group.outputChannel, 'output-channel');
+  for (const [index, place] of group.places.entries()) {
+    const path = ['group', 'places', index];
+    if (group.measuredBy === 'scanner' && place.channel === undefined)
+      yield { path, message: "missing 'channel': which one puts the meter across this place?" };
+    if (group.measuredBy === 'meters' && place.meter === undefined)
+      yield { path, message: "missing 'meter': each place needs one of its own" };
+    if (place.channel === undefined) continue;
+    const other = used.get(place.channel);
+    if (other !== undefined) {
+      yield { path: [...path, 'channel'], message: `channel ${place.channel} is that of ${other} already` };
+    }
+    used.set(place.channel, `place ${index + 1}`);
+  }
+}
