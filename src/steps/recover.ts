@@ -1,4 +1,5 @@
 import type { Seconds, Volts } from '../quantity/quantity.js';
+import { askToDo } from './ask-to-do.js';
 import type { Points } from './point.js';
 import { ModuleStaysOffError } from './step-error.js';
 import type { StepContext } from './step-kind.js';
@@ -18,7 +19,7 @@ export async function comeBack(
   least: Volts,
   patience: Seconds,
 ): Promise<CameBack> {
-  const { bench, journal, operator, clock, signal, step } = context;
+  const { bench, journal, operator, clock, step } = context;
   const unloaded = clock.now();
   await bench.load.inputOff();
   const byItself = await waitForVoltage(points, unloaded, least, patience);
@@ -40,15 +41,11 @@ export async function comeBack(
     });
     return 'stayed-off';
   }
-  const request = {
+  await askToDo(context, {
     name: 'cycle-input',
     text: 'The module has switched itself off and stays off. Unplug it, wait until its lamp is out (half a minute), plug it in again.',
     act: 'cycle input',
-    answer: 'done',
-  } as const;
-  journal.append({ event: 'prompt', step, text: request.text, act: request.act });
-  const answer = await operator.ask(request, signal);
-  journal.append({ event: 'answer', step, name: request.name, answer });
+  });
   const cycled = await waitForVoltage(points, clock.now(), least, patience);
   const outcome = cycled.back ? 'came-back-after-cycling' : 'stayed-off';
   journal.append({ event: 'recovery', step, outcome, after: cycled.after, within: cycled.within });
