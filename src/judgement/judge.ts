@@ -2,39 +2,25 @@ import { type Finding, findingNamed } from '../analysis/finding.js';
 import type { RunHeader } from '../record/run-header.js';
 import { effectiveDegreesOfFreedom } from '../statistics/effective-freedom.js';
 import { decide } from '../statistics/guarded-decision.js';
+import { judgeAgainstBaseline } from './against-baseline.js';
+import type { Decision } from './decision.js';
 import { type Limit, limitOf, limitInWords } from './limit.js';
 
-/** Whether a requirement on a finding is met, the uncertainty being on the safe side (JCGM 106, ILAC-G8). */
-export interface Decision {
-  readonly finding: string;
-  /** As a person reads it: `at least 4 A (100 % of rated-current)`. */
-  readonly requirement: string;
-  readonly outcome: Outcome;
-  /** That the true value meets the requirement; null where there is nothing to compute it from. */
-  readonly probability: number | null;
-  readonly note: string;
-}
-
-export type Outcome = 'conforms' | 'does-not-conform' | 'undecided';
+export { overall, type Decision, type Outcome } from './decision.js';
 
 /**
  * Decides each criterion of the record's procedure, with a guard band as wide as the expanded
- * uncertainty. A finding that was not made leaves its criterion undecided.
+ * uncertainty, and after them what must or must not have changed since the baseline, where there is one. A
+ * finding that was not made leaves its criterion undecided.
  */
 export function judge(header: RunHeader, findings: readonly Finding[]): readonly Decision[] {
-  return header.criteria.map(({ finding: name, requirement }) => {
+  const required = header.criteria.map(({ finding: name, requirement }) => {
     const finding = findingNamed(findings, name);
-    return requirement.kind === 'is'
-      ? decideWord(name, requirement.word, finding)
-      : decideQuantity(name, requirement.kind, limitOf(requirement.value, header, findings), finding);
+    if (requirement.kind === 'is') return decideWord(name, requirement.word, finding);
+    const limit = limitOf(name, requirement.value, header, findings);
+    return decideQuantity(name, requirement.kind, limit, finding);
   });
-}
-
-/** The worst of the decisions; a record without criteria is not judged. */
-export function overall(decisions: readonly Decision[]): Outcome | 'not-judged' {
-  if (decisions.length === 0) return 'not-judged';
-  if (decisions.some((decision) => decision.outcome === 'does-not-conform')) return 'does-not-conform';
-  return decisions.some((decision) => decision.outcome === 'undecided') ? 'undecided' : 'conforms';
+  return [...required, ...judgeAgainstBaseline(header, findings)];
 }
 
 /**
@@ -51,7 +37,7 @@ function decideQuantity(
   const requirement = `${kind === 'at-least' ? 'at least' : 'at most'} ${limitInWords(limit, name)}`;
   if (finding === undefined || typeof finding.value !== 'number')
     return undecided(name, requirement, 'was not measured');
-  if (limit.value === undefined) return undecided(name, requirement, 'what it refers to was not measured');
+  if (limit.value === undefined) return undecided(name, requirement, limit.missing);
   const shown = decide({
     value: finding.value,
     standardUncertainty: Math.hypot(finding.standardUncertainty ?? 0, limit.standardUncertainty),
@@ -63,6 +49,9 @@ function decideQuantity(
   const proven = kind === 'at-least' ? 'conforms' : 'does-not-conform';
   if (finding.bound === 'least' && shown.outcome !== proven)
     return undecided(name, requirement, 'it may be more: no limit was met');
+  // A limit that is itself only a least one leaves the opposite open.
+  if (limit.bound === 'least' && shown.outcome === proven)
+    return undecided(name, requirement, 'what it refers to may be more: no limit was met then');
   return {
     finding: name,
     requirement,

@@ -18,7 +18,7 @@ describe('the limit of a criterion', () => {
     ],
     [{ kind: 'share', ratio: 0.5, of: 'open-circuit-voltage' }, undefined, 0, '50 % of open-circuit-voltage'],
   ] as const)('%j', (written, value, uncertainty, words) => {
-    const limit = limitOf(written, headerOf(), [dropout]);
+    const limit = limitOf('usable-current', written, headerOf(), [dropout]);
     if (value === undefined) expect(limit.value).toBeUndefined();
     else expect(limit.value).toBeCloseTo(value, 12);
     expect(limit.standardUncertainty).toBeCloseTo(uncertainty, 12);
