@@ -7,7 +7,7 @@ import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { JournalEvent } from '../record/journal-event.js';
 import type { Operator } from '../steps/operator.js';
-import type { Progress, Tried } from '../steps/step-kind.js';
+import type { Progress, StepContext, Tried } from '../steps/step-kind.js';
 import { cautionTexts } from './cautions.js';
 import type { Plan } from './plan.js';
 import { StoppedByOperator, UnforeseenError } from './stopped.js';
@@ -125,6 +125,7 @@ async function goThrough(performance: Performance): Promise<void> {
   const { plan, bench, journal, operator, clock, signal, watch } = performance;
   const known = { ...plan.known };
   const tried: Tried = {};
+  const earths: StepContext['earths'] = new Map();
   const limits = {
     ...plan.ceilings,
     ratedVoltage: plan.underTest.rated.voltage,
@@ -151,6 +152,7 @@ async function goThrough(performance: Performance): Promise<void> {
       operator,
       known,
       tried,
+      earths,
       show: (progress) => {
         watch.progress(step, progress);
       },

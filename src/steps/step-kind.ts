@@ -1,6 +1,7 @@
 import type { z } from 'zod';
 import type { OpenBench } from '../bench/open-bench.js';
 import type { GuardLimits } from '../bench/guards.js';
+import type { EarthRelation } from '../circuit/earth-relation.js';
 import type { Clock } from '../clock/clock.js';
 import type { Circuit } from '../files/procedure.js';
 import type { Amperes, QuantityOrShare, ReferenceName, Seconds } from '../quantity/quantity.js';
@@ -61,6 +62,8 @@ export interface StepContext {
   readonly known: Known;
   /** What a ramp saw the module hold and drop, so that a search does not begin above it. */
   readonly tried: Tried;
+  /** How each module's output stands to earth, by its name, as a check in this run found it. One that is not there was not checked. */
+  readonly earths: Map<string, EarthRelation>;
   readonly show: (progress: Progress) => void;
 }
 

@@ -89,6 +89,7 @@ export async function stage(change: StageChange = {}): Promise<Stage> {
         operator: operator ?? nobody,
         known,
         tried: {},
+        earths: new Map(),
         show: (progress) => shown.push(progress),
       });
     },
