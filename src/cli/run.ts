@@ -22,6 +22,8 @@ export interface RunWanted {
   readonly bench: string;
   readonly module: readonly string[];
   readonly runs: string;
+  readonly baseline?: string;
+  readonly tolerance?: string;
   readonly yes?: boolean;
   readonly dryRun?: boolean;
   readonly json?: boolean;
@@ -29,7 +31,7 @@ export interface RunWanted {
 
 /** `railproof run`: performs a procedure and prints what it shows. */
 export async function run(wanted: RunWanted, streams: Streams): Promise<ExitCode> {
-  const loaded = await loadPlan({ procedure: wanted.procedure, bench: wanted.bench, modules: wanted.module });
+  const loaded = await loadPlan({ ...wanted, modules: wanted.module });
   if (wanted.dryRun === true) {
     streams.stdout.write(wanted.json === true ? jsonText(planAsJson(loaded.plan)) : planAsText(loaded.plan));
     return exitCodes.conforms;
@@ -82,8 +84,8 @@ function operatorFor(world: World, yes: boolean, streams: Streams): Operator {
 /** A procedure that needs a person does not begin without one. @throws OperatorAbsentError */
 function requireOperator(plan: Plan, operator: Operator, yes: boolean): void {
   if (operator.present) return;
-  const needing = plan.steps.flatMap(({ kind }, index) =>
-    needsOperator(kind, plan.bench) ? [`step ${index + 1} (${kind.kind})`] : [],
+  const needing = plan.steps.flatMap((step, index) =>
+    needsOperator(step, plan.bench) ? [`step ${index + 1} (${step.kind.kind})`] : [],
   );
   if (!yes && plan.cautions.length > 0) needing.push('its cautions');
   if (!yes && plan.procedure.wiring.length > 0) needing.push('its wiring');

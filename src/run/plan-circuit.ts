@@ -4,6 +4,7 @@ import type { Module } from '../files/module.js';
 import type { Circuit, ProcedureStep } from '../files/procedure.js';
 import type { StepKind } from '../steps/step-kind.js';
 import type { UnderTest } from '../steps/under-test.js';
+import type { PlanStep } from './plan.js';
 
 export function underTestOf(circuit: Circuit, modules: readonly [Module, ...Module[]]): UnderTest {
   const [first, ...others] = modules;
@@ -88,6 +89,8 @@ function* tapProblems(where: string, circuit: Circuit, { group, instruments }: B
 }
 
 /** Whether someone has to be there for the step, on this bench. */
-export function needsOperator({ needs }: StepKind, { group }: Bench): boolean {
-  return needs.operator === 'always' || (needs.taps === true && group?.measuredBy === 'operator');
+export function needsOperator({ kind, parameters }: PlanStep, { group }: Bench): boolean {
+  const { needs } = kind;
+  if (needs.operator === 'always' || kind.asks?.(parameters) === true) return true;
+  return needs.taps === true && group?.measuredBy === 'operator';
 }

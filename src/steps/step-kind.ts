@@ -34,6 +34,8 @@ export interface StepKind<Parameters = unknown> {
     /** What the drivers must say how to read, by role. */
     readonly readings?: Readonly<Partial<Record<'load' | 'meter', readonly string[]>>>;
   };
+  /** Whether, told so, it asks someone to act, on top of `needs.operator`. */
+  asks?(parameters: Parameters): boolean;
   /** Every quantity among the parameters that may refer to another, by parameter name. */
   references(parameters: Parameters): Readonly<Record<string, QuantityOrShare>>;
   /** The parameters among `references` that are currents the load will be set to. */

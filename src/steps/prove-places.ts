@@ -1,0 +1,147 @@
+import { WrongPlaceError } from '../bench/wrong-place-error.js';
+import type { Amperes, Ratio, Seconds, Volts } from '../quantity/quantity.js';
+import type { RunningMoments } from '../statistics/running-moments.js';
+import { askToDo } from './ask-to-do.js';
+import type { Pass } from './place-passes.js';
+import type { Points } from './point.js';
+import type { StepContext } from './step-kind.js';
+import { tapsOf } from './under-test.js';
+
+/** What a proof is made with. */
+export interface Proving {
+  /** In a group, what the modules carry while one of them is unplugged. */
+  readonly current: Amperes;
+  readonly dwell: Seconds;
+  readonly readings: number;
+}
+
+/** A place reads nothing when it reads less than this part of what it, or the largest of the others, read before. */
+const nothing: Ratio = 0.2;
+/** How far from its label a module's voltage may be before it is something else that is read. */
+const offLabel: Ratio = 0.25;
+/** What a supply takes to start. */
+const startUp: Seconds = 2;
+
+type Read = ReadonlyMap<string, Volts>;
+
+/**
+ * Shows that what is read at a place comes from the module that is said to stand there, by unplugging one
+ * after the other: its place must go dead, and no other. In a group a small current shows it, in a stack the
+ * open voltages do. In this way swapped modules, probes at another place, swapped probes and a scanner whose
+ * channel is stuck are found before anything is made of the readings.
+ * @throws WrongPlaceError naming what was found and where.
+ */
+export async function provePlaces(
+  context: StepContext,
+  points: Points,
+  pass: Pass,
+  proving: Proving,
+): Promise<void> {
+  const before = await look(context, points, pass, proving, undefined);
+  checkSigns(context, before);
+  for (const { name } of context.underTest.modules) {
+    if (pass.of !== undefined && pass.of !== name) continue;
+    await askToDo(context, {
+      name: `unplug-${name}`,
+      text: `Pull the mains plug (or the input) of ${name}, and only of ${name}. Nothing else is touched.`,
+      act: `unplug ${name}`,
+    });
+    const without = await look(context, points, pass, proving, name);
+    await askToDo(context, {
+      name: `plug-in-${name}`,
+      text: `Plug ${name} in again.`,
+      act: `plug in ${name}`,
+    });
+    await context.clock.sleep(startUp, context.signal);
+    checkProof(context, name, before, without);
+  }
+}
+
+/** One point of the proof, of all that the pass reaches; the load is off before and after it. */
+async function look(
+  { bench, underTest, signal }: StepContext,
+  points: Points,
+  { taps, of }: Pass,
+  { current, dwell, readings }: Proving,
+  unplugged: string | undefined,
+): Promise<Read> {
+  signal.throwIfAborted();
+  const loaded = underTest.circuit === 'parallel';
+  await bench.load.unload();
+  if (loaded) await bench.load.inputOn();
+  const about = unplugged ?? of;
+  const seen = await points.take({
+    phase: 'proof',
+    set: loaded ? { current } : {},
+    ...(about === undefined ? {} : { of: about }),
+    dwell,
+    readings,
+    wanted: { taps },
+    judge: () => 'measured',
+  });
+  await bench.load.unload();
+  await bench.load.inputOff();
+  return meansOf(seen.taps);
+}
+
+function meansOf(taps: ReadonlyMap<string, RunningMoments>): Read {
+  return new Map([...taps].map(([at, moments]) => [at, moments.mean]));
+}
+
+/** With all plugged in: no place reads backwards, and in a stack each reads about what its label says. */
+function checkSigns({ bench, underTest }: StepContext, before: Read): void {
+  const least = 3 * (bench.meter?.driver.accuracy['voltage']?.fixed ?? 0);
+  const usual = Math.max(0, ...[...before.values()].map(Math.abs));
+  for (const { place, at } of tapsOf(underTest)) {
+    const volts = before.get(at);
+    const module = underTest.modules[place - 1];
+    if (volts === undefined || module === undefined) continue;
+    if (volts < -Math.max(least, usual / 10)) throw reversed(underTest.circuit, module.name);
+    const { voltage } = module.rated;
+    if (underTest.circuit === 'series' && Math.abs(volts - voltage) > voltage * offLabel) {
+      throw elsewhere(
+        `at the place of ${module.name} ${volts.toFixed(2)} V is read, and its label says ${voltage} V`,
+      );
+    }
+  }
+}
+
+function checkProof({ underTest }: StepContext, unplugged: string, before: Read, without: Read): void {
+  const taps = tapsOf(underTest);
+  const own = taps.find(({ place }) => underTest.modules[place - 1]?.name === unplugged);
+  if (own === undefined || !without.has(own.at)) return;
+  const largest = Math.max(...[...before.values(), ...without.values()].map(Math.abs));
+  const isDead = (read: Read, at: string): boolean =>
+    Math.abs(read.get(at) ?? Number.NaN) < nothing * largest;
+  if (isDead(without, own.at)) return;
+  const other = taps.find(({ at }) => at !== own.at && isDead(without, at) && !isDead(before, at));
+  const standing = other === undefined ? undefined : underTest.modules[other.place - 1]?.name;
+  if (other !== undefined && standing !== undefined) {
+    throw new WrongPlaceError(
+      'modules-swapped',
+      `${unplugged} was unplugged, and it was the place of ${standing} that went dead: ` +
+        `${unplugged} stands in place ${other.place}`,
+      'wire them in the order in which --module names them, or name them in the order in which they are wired',
+    );
+  }
+  throw elsewhere(`${unplugged} was unplugged, and what is read at its place stayed`);
+}
+
+function reversed(circuit: StepContext['underTest']['circuit'], module: string): WrongPlaceError {
+  const across = circuit === 'parallel' ? 'ballast' : 'output';
+  return new WrongPlaceError(
+    'probes-reversed',
+    `the probes across the ${across} of ${module} are reversed: it reads below zero`,
+    circuit === 'parallel'
+      ? "plus belongs at the module's end of the ballast, minus at the common output"
+      : "plus belongs at the module's plus, minus at its 0 V",
+  );
+}
+
+function elsewhere(found: string): WrongPlaceError {
+  return new WrongPlaceError(
+    'probes-elsewhere',
+    found,
+    'the probes or the scanner are not where the bench file has them, a channel is stuck, or another module was unplugged',
+  );
+}

@@ -1,0 +1,75 @@
+import { z } from 'zod';
+import { quantity, quantityOrShare } from '../files/building-blocks.js';
+import { formatQuantity, formatShare } from '../quantity/format-quantity.js';
+import type { Amperes, Seconds } from '../quantity/quantity.js';
+import { resolve } from '../quantity/resolve-share.js';
+import { defineStep } from './define-step.js';
+import { climb, climbParameters } from './place-climb.js';
+import { passThrough } from './place-passes.js';
+import { Points } from './point.js';
+import { provePlaces } from './prove-places.js';
+
+const readingTime = 0.1;
+const day: Seconds = 24 * 3600;
+/** Of the smallest label: enough to be read across a ballast, little enough for any of them alone. */
+const provingShare = 0.25;
+
+export const sharingLog = defineStep({
+  kind: 'sharing-log',
+  summary: "total load stepped or held: each module's current from the voltage across its ballast",
+  parameters: z.strictObject({
+    ...climbParameters,
+    from: quantityOrShare('current', 'the first point', { above: 0 }).prefault('10 % of rated-current'),
+    to: quantityOrShare('current', 'the last point', { above: 0 }),
+    imbalance: quantity('ratio', 'how unequal the currents may be, (largest − smallest) over their mean', {
+      above: 0,
+      most: 2,
+    }).prefault('10 %'),
+    tolerance: quantity('ratio', 'of the resistors from which a ballast would be chosen', {
+      least: 0,
+      most: 0.2,
+    }).prefault('1 %'),
+    hold: quantity('time', 'how long the last point is held and looked at, to see the shares move', {
+      least: 0,
+      most: day,
+    }).prefault('0 s'),
+    every: quantity('time', 'one look each so often while it is held', { above: 0, most: 3600 }).prefault(
+      '10 s',
+    ),
+    prove: z
+      .boolean()
+      .default(true)
+      .describe('Whether each module is unplugged once, to show which place is its own.'),
+  }),
+  measures: [],
+  needs: { liveModule: true, operator: 'never', circuits: ['parallel'], taps: true },
+  asks: ({ prove }) => prove,
+  references: ({ from, to }) => ({ from, to }),
+  currents: ['from', 'to'],
+  rises: { from: 'from', to: 'to', mayBeLevel: true },
+  describe: ({ points, from, to, hold }) =>
+    `${points} points from ${formatShare(from, 'current')} to ${formatShare(to, 'current')}, each module's current at each` +
+    (hold > 0 ? `, held for ${formatQuantity(hold, 'time')}` : ''),
+  duration: ({ points, dwell, readings, hold }) => points * (dwell + readings * 3 * readingTime) + hold,
+  async perform(given, context) {
+    const { modules } = context.underTest;
+    const proving: Amperes = provingShare * Math.min(...modules.map(({ rated }) => rated.current));
+    const points = new Points(context);
+    const from = resolve(given.from, context.known);
+    const to = resolve(given.to, context.known);
+    let reached = Number.POSITIVE_INFINITY;
+    await passThrough(context, async (pass) => {
+      if (given.prove) await provePlaces(context, points, pass, { ...given, current: proving });
+      const climbed = await climb(context, points, pass, {
+        ...given,
+        phase: 'share',
+        from,
+        to,
+        below: reached,
+        hold: { for: given.hold, every: given.every },
+      });
+      reached = Math.min(reached, climbed.dropped ?? Number.POSITIVE_INFINITY);
+      return reached > from ? 'go-on' : 'enough';
+    });
+  },
+});
