@@ -5,7 +5,7 @@ import type { Clock } from '../clock/clock.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { realClock } from '../clock/real-clock.js';
 import { VirtualClock } from '../clock/virtual-clock.js';
-import { type Bench, type BenchDrivers, type Post, postsOf, roleOf } from '../files/bench.js';
+import { type Bench, type BenchDrivers, placeOf, type Post, postsOf, roleOf } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
 import { readDriver } from '../files/read-driver.js';
 import type { FileRead } from '../files/read-text.js';
@@ -20,6 +20,7 @@ const packageFolder = new URL('../../', import.meta.url);
 export const shipped = {
   procedures: fileURLToPath(new URL('procedures/', packageFolder)),
   drivers: fileURLToPath(new URL('drivers/', packageFolder)),
+  tolerances: fileURLToPath(new URL('procedures/tolerances/', packageFolder)),
 };
 
 /** As a record names a file: those that come with the program by their place in it, wherever that is. */
@@ -39,9 +40,10 @@ export class WrongRoleError extends RailproofError {
   readonly exitCode = exitCodes.badFile;
 
   constructor(bench: string, post: Post, driver: Driver) {
-    super(`${bench}: ${post}: ${driver.name} is a driver for a ${driver.role}, not for a ${roleOf(post)}`, {
-      advice: '`railproof drivers` lists the shipped ones with their roles',
-    });
+    super(
+      `${bench}: ${placeOf(post).join('.')}: ${driver.name} is a driver for a ${driver.role}, not for a ${roleOf(post)}`,
+      { advice: '`railproof drivers` lists the shipped ones with their roles' },
+    );
   }
 }
 

@@ -82,6 +82,12 @@ export function roleOf(post: Post): Role {
   return post === 'load' || post === 'scanner' || post === 'thermometer' ? post : 'meter';
 }
 
+/** Where a bench file names the instrument at a post. */
+export function placeOf(post: Post): readonly (string | number)[] {
+  if (post === 'load' || roleOf(post) !== 'meter' || post === 'meter') return ['instruments', post];
+  return ['group', 'places', Number(post.slice('meter-'.length)) - 1, 'meter'];
+}
+
 /** The driver at a post; undefined where the bench has none there. */
 export function driverAt(drivers: BenchDrivers, post: Post): Driver | undefined {
   if (post === 'load' || post === 'meter' || post === 'scanner' || post === 'thermometer')

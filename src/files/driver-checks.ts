@@ -106,24 +106,31 @@ function* strayPlaceholders(driver: DriverFile): Generator<Complaint> {
   }
 }
 
+/** The key that makes a reading of each kind, and what such a reading is. */
+const kinds: Readonly<Record<DriverReading['kind'], { readonly key: string; readonly is: string }>> = {
+  number: { key: "'unit'", is: 'a number' },
+  flag: { key: "'true-when'", is: 'a yes or a no' },
+  channel: { key: "'channel-in'", is: "a channel's number" },
+};
+
 function* readingKinds({ readings }: DriverFile): Generator<Complaint> {
   for (const [name, reading] of Object.entries(readings)) {
+    // What is no reading at all has been told already.
+    if (!Object.hasOwn(kinds, reading.kind)) continue;
     const path = ['readings', name];
-    const due = isNumber(name) ? readingDimensions[name] : undefined;
-    if (due !== undefined && reading.kind !== 'number') {
-      yield { path, message: `the ${name} is a number; give its 'unit' in place of 'true-when'` };
-    }
-    if (isFlag(name) && reading.kind !== 'flag') {
-      yield { path, message: `${name} is a yes or a no; give 'true-when'` };
-    }
-    if ((name === 'closed-channel') !== (reading.kind === 'channel')) {
+    const due = kindOf(name);
+    if (due !== undefined && reading.kind !== due) {
+      const told = name.startsWith('measures-') ? name : `the ${name}`;
+      const give = due === 'number' ? `its ${kinds[due].key}` : kinds[due].key;
       yield {
         path,
-        message: "the closed-channel is a channel's number; give 'channel-in', which no other reading has",
+        message: `${told} is ${kinds[due].is}; give ${give} in place of ${kinds[reading.kind].key}`,
       };
+      continue;
     }
-    if (due !== undefined && reading.kind === 'number' && reading.dimension !== due) {
-      const message = `the unit is that of ${dimensionWords[reading.dimension].name}; this reading is ${dimensionWords[due].name}`;
+    const dimension = isNumber(name) ? readingDimensions[name] : undefined;
+    if (dimension !== undefined && reading.kind === 'number' && reading.dimension !== dimension) {
+      const message = `the unit is that of ${dimensionWords[reading.dimension].name}; this reading is ${dimensionWords[dimension].name}`;
       yield { path: [...path, 'unit'], message };
     }
   }
@@ -148,8 +155,10 @@ function stray(placeholder: string, due: string | undefined): string {
   return `unknown placeholder ${shown(placeholder)}${hint}`;
 }
 
-function isFlag(name: string): boolean {
-  return name.endsWith('-state') || name.startsWith('measures-');
+function kindOf(name: string): DriverReading['kind'] | undefined {
+  if (isNumber(name)) return 'number';
+  if (name.endsWith('-state') || name.startsWith('measures-')) return 'flag';
+  return name === 'closed-channel' ? 'channel' : undefined;
 }
 
 function isNumber(name: string): name is keyof typeof readingDimensions {

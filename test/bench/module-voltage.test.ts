@@ -15,8 +15,21 @@ describe('the voltage at the module', () => {
   it("is the meter's where the bench file says that the meter is there", async () => {
     const bench = await (await nursery({ meter: { accuracy: accuracyOf(0.002) } })).open();
     expect(moduleVoltage(bench, taken)).toBe(15.1);
-    expect(moduleVoltage(bench, taken.slice(1))).toBeNaN();
     expect(voltageResolution(bench)).toBe(0.002);
+  });
+
+  it("is the load's and what the leads lose while the meter's probes are elsewhere", async () => {
+    const bench = await (await nursery()).open();
+    const elsewhere: Taken = { ...value('meter', 'voltage', 0.2), at: 'ballast-of-K1' };
+    // 35 mΩ x 4 A
+    expect(moduleVoltage(bench, [elsewhere, ...taken.slice(1)])).toBeCloseTo(15.04, 12);
+    expect(moduleVoltage(bench, taken.slice(1))).toBeCloseTo(15.04, 12);
+  });
+
+  it('is not made up from the load where the meter was read and had no value', async () => {
+    const bench = await (await nursery()).open();
+    const blind: Taken = { of: 'meter', what: 'voltage', measurement: { kind: 'overload' } };
+    expect(moduleVoltage(bench, [blind, ...taken.slice(1)])).toBeNaN();
   });
 
   it("is the load's and what the leads lose otherwise, even with a meter on the bench", async () => {

@@ -142,12 +142,17 @@ describe('one mistake is one line, at its place', () => {
     [
       ', unit: V ',
       ' ',
-      "20:12: readings.voltage: a reading has either a 'unit', when it is a number, or 'true-when', when it is a yes or a no",
+      "20:12: readings.voltage: a reading has a 'unit', when it is a number, or 'true-when', when it is a yes or a no, or 'channel-in', when it is a scanner's channel",
     ],
     [
       ', unit: V ',
       ', true-when: "1" ',
       "20:12: readings.voltage: the voltage is a number; give its 'unit' in place of 'true-when'",
+    ],
+    [
+      ', unit: V ',
+      ', channel-in: "(?<value>1)" ',
+      "20:12: readings.voltage: the voltage is a number; give its 'unit' in place of 'channel-in'",
     ],
     [
       'true-when: "^(1|ON)$"',
@@ -207,6 +212,73 @@ describe('one mistake is one line, at its place', () => {
     expect(problemsOf(() => parseDriver(changed(find, replacement), 'd.yaml'))).toEqual([
       `d.yaml:${problem}`,
     ]);
+  });
+});
+
+describe('a scanner', () => {
+  const scanner = (reading: string): string =>
+    [
+      'railproof: driver 1',
+      'name: scanner-plain',
+      'role: scanner',
+      'summary: Scanners of few words',
+      'identify: "*IDN?"',
+      'errors: none',
+      'operations: { make-safe: [], open-all: [OPEN], close-channel: ["CLOSE {channel}"] }',
+      `readings: { closed-channel: ${reading} }`,
+    ].join('\n');
+
+  it('says which channel is closed by a number that is found in its reply', () => {
+    const { readings } = parseDriver(scanner('{ ask: "CLOSED?", channel-in: "(?<value>[0-9]+)" }'), 's.yaml');
+    expect(readings).toEqual({
+      'closed-channel': { kind: 'channel', ask: ['CLOSED?'], channelIn: /(?<value>[0-9]+)/ },
+    });
+  });
+
+  it.each([
+    [
+      '{ ask: "CLOSED?", unit: V }',
+      "8:29: readings.closed-channel: the closed-channel is a channel's number; give 'channel-in' in place of 'unit'",
+    ],
+    [
+      '{ ask: "CLOSED?", channel-in: "[0-9]+" }',
+      "8:59: readings.closed-channel.channel-in: '[0-9]+' lacks a group named 'value': (?<value>…)",
+    ],
+  ])('can not say it by %s', (reading, problem) => {
+    expect(problemsOf(() => parseDriver(scanner(reading), 's.yaml'))).toEqual([`s.yaml:${problem}`]);
+  });
+
+  it('must say into which channel', () => {
+    const text = scanner('{ ask: "CLOSED?", channel-in: "(?<value>[0-9]+)" }').replace(' {channel}', ' 1');
+    expect(problemsOf(() => parseDriver(text, 's.yaml'))).toEqual([
+      's.yaml:7:63: operations.close-channel: no message holds {channel}, which stands for the value',
+    ]);
+  });
+});
+
+describe('a meter that can be asked what it is set to', () => {
+  it('answers with a yes or a no', () => {
+    const text = [
+      'railproof: driver 1',
+      'name: meter-plain',
+      'role: meter',
+      'summary: Meters that answer READ?',
+      'identify: "*IDN?"',
+      'errors: none',
+      'operations: { make-safe: [] }',
+      'readings:',
+      '  voltage: { ask: "READ?", unit: V }',
+      '  measures-voltage: { ask: "CONF?", unit: V }',
+    ].join('\n');
+    expect(problemsOf(() => parseDriver(text, 'm.yaml'))).toEqual([
+      "m.yaml:10:21: readings.measures-voltage: measures-voltage is a yes or a no; give 'true-when' in place of 'unit'",
+    ]);
+    const right = text.replace('"CONF?", unit: V', '"CONF?", true-when: VOLT');
+    expect(parseDriver(right, 'm.yaml').readings['measures-voltage']).toEqual({
+      kind: 'flag',
+      ask: ['CONF?'],
+      trueWhen: /VOLT/,
+    });
   });
 });
 

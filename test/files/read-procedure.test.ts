@@ -15,6 +15,8 @@ it('the example of the design is read', () => {
     name: 'real-limit',
     title: 'What one module really delivers',
     purpose: '',
+    circuit: 'single',
+    wiring: [],
     cautions: ['mains', 'hot-surfaces'],
     steps: [
       { kind: 'open-circuit', parameters: { for: 5 }, place: 'real-limit.yaml:6:5' },
@@ -57,10 +59,23 @@ it('what may be left out has its default, and a step may stand without parameter
     name: 'look',
     title: 'A look',
     purpose: '',
+    circuit: 'single',
+    wiring: [],
     cautions: [],
     steps: [{ kind: 'open-circuit', parameters: { for: 5 }, place: 'real-limit.yaml:5:5' }],
     criteria: [],
     derating: { margin: 0.8, aboveNameplate: 'never' },
+  });
+});
+
+it('it may be for a group or for a stack, and say how the bench is wired', () => {
+  const text = changed(
+    'cautions:',
+    'circuit: series\nwiring:\n  - Join plus of the lower to 0 V of the upper.\n  - The load goes across all.\ncautions:',
+  );
+  expect(parse(text)).toMatchObject({
+    circuit: 'series',
+    wiring: ['Join plus of the lower to 0 V of the upper.', 'The load goes across all.'],
   });
 });
 

@@ -23,7 +23,13 @@ function rowsOf(folder: RunFolder): Record<string, string>[] {
 describe('readings.csv', () => {
   it('has a row for each sample, with the units in the header and empty cells for what was not read', () => {
     const common = { step: '1', 'step kind': 'load-ramp', point: '1', phase: 'ramp', 'set current (A)': '2' };
-    const rest = { 'set voltage (V)': '', 'temperature (°C)': '' };
+    const rest = {
+      'set voltage (V)': '',
+      'temperature (°C)': '',
+      'voltage elsewhere (V)': '',
+      'resistance (Ohm)': '',
+      'probes at': '',
+    };
     expect(rowsOf(recordOf(shortRun))).toEqual([
       {
         'time (s)': '0.6',
@@ -44,6 +50,31 @@ describe('readings.csv', () => {
         'load current (A)': '1.9991',
       },
     ]);
+  });
+
+  it('gives what was read elsewhere a row of its own, which says where the probes were', () => {
+    const reading = { event: 'reading', step: 1, point: 1, sample: 1 } as const;
+    const rows = rowsOf(
+      recordOf([
+        opened,
+        { event: 'step-began', step: 1, kind: 'sharing-log' },
+        { event: 'point-began', step: 1, point: 1, phase: 'share', set: { current: 6 } },
+        { ...reading, of: 'meter', what: 'voltage', value: 15.1 },
+        { ...reading, of: 'meter', what: 'voltage', value: 0.151, at: 'ballast-of-K1' },
+        { ...reading, of: 'meter', what: 'voltage', value: null, at: 'ballast-of-K2' },
+        { ...reading, of: 'meter', what: 'resistance', value: 0.2, at: 'leads' },
+        { ...reading, of: 'load', what: 'current', value: 6 },
+      ]),
+    );
+    expect(
+      rows.map((row) => [row['probes at'], row['voltage elsewhere (V)'], row['resistance (Ohm)']]),
+    ).toEqual([
+      ['ballast-of-K1', '0.151', ''],
+      ['ballast-of-K2', '', ''],
+      ['leads', '', '0.2'],
+      ['', '', ''],
+    ]);
+    expect(rows.at(-1)).toMatchObject({ 'meter voltage (V)': '15.1', 'load current (A)': '6' });
   });
 
   it('ends every line in CR LF, the last one too (RFC 4180)', () => {

@@ -39,7 +39,7 @@ describe('a load that was switched off by something else is not taken for a drop
       await expect(bench.perform('load-ramp', { to: '4 A', points: 5 })).rejects.toMatchObject({
         code: 'LOAD_SWITCHED_OFF',
         exitCode: 3,
-        current: 2,
+        set: { current: 2 },
         message:
           'the load at simulated:standard-load switched its input off by itself at 2.000 A: ' +
           'its own protection, or someone at its panel',
@@ -74,7 +74,7 @@ describe('a load that was switched off by something else is not taken for a drop
     world.setLoad({ protection: { current: 4.6 } }, bench.clock.now());
     await expect(bench.perform('dropout-search', toTwice)).rejects.toMatchObject({
       code: 'LOAD_SWITCHED_OFF',
-      current: 4.8,
+      set: { current: 4.8 },
     });
     expect(outcomesOf(bench)).toEqual(['held', 'held']);
     expect(bench.the('point-began').map(({ phase }) => phase)).not.toContain('overload');
