@@ -6,7 +6,7 @@ import { packageFacts } from './package-facts.js';
 import { recordedPath } from './wiring.js';
 
 /** What a record says of its run before the run begins: all that anyone who reads it later must know. */
-export function headerOf({ plan, files }: LoadedPlan, bench: OpenBench, began: Date): RunHeader {
+export function headerOf({ plan, files, baseline }: LoadedPlan, bench: OpenBench, began: Date): RunHeader {
   const { procedure } = plan;
   return {
     format: headerFormat,
@@ -38,6 +38,7 @@ export function headerOf({ plan, files }: LoadedPlan, bench: OpenBench, began: D
       settings: parameters as Record<string, unknown>,
     })),
     criteria: procedure.criteria.map(({ finding, requirement }) => ({ finding, requirement })),
+    ...(baseline === undefined ? {} : { baseline: baseline.baseline }),
     derating: procedure.derating,
     instruments: bench.instruments.map(({ post, instrument: { driver, address, identity } }) => ({
       role: post,
@@ -52,6 +53,7 @@ export function headerOf({ plan, files }: LoadedPlan, bench: OpenBench, began: D
       fileOf('bench', files.bench),
       ...files.modules.map((module) => fileOf('module', module)),
       ...files.drivers.map(({ file }) => fileOf('driver', file)),
+      ...(baseline === undefined ? [] : [fileOf('tolerance', baseline.tolerance)]),
     ],
   };
 }

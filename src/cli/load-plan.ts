@@ -1,3 +1,4 @@
+import { dirname } from 'node:path';
 import type { Bench } from '../files/bench.js';
 import type { Module } from '../files/module.js';
 import { readBench } from '../files/read-bench.js';
@@ -7,6 +8,7 @@ import type { Procedure } from '../files/procedure.js';
 import type { FileRead } from '../files/read-text.js';
 import { makePlan, type Plan } from '../run/plan.js';
 import { stepKinds } from '../steps/index.js';
+import { defaultTolerance, loadBaseline, type LoadedBaseline, NoBaselineError } from './baseline.js';
 import { planDrivers, readBenchDrivers, shipped, type DriverFiles, vocabulary } from './wiring.js';
 
 export interface PlanFiles {
@@ -19,16 +21,21 @@ export interface PlanFiles {
 export interface LoadedPlan {
   readonly plan: Plan;
   readonly files: PlanFiles;
+  /** Where it is to be judged against an earlier run. */
+  readonly baseline?: LoadedBaseline;
 }
 
 /**
- * Reads every file that a run needs and checks that they fit together.
- * @throws BadFileError, MissingFileError, PlanError
+ * Reads every file that a run needs, and the record that it is judged against, and checks that they fit
+ * together. Without a tolerance the procedure's own counts, and without that nothing may have changed.
+ * @throws BadFileError, MissingFileError, PlanError, NoRecordError, BadRecordError, BadBaselineError, NoBaselineError
  */
 export async function loadPlan(wanted: {
   readonly procedure: string;
   readonly bench: string;
   readonly modules: readonly string[];
+  readonly baseline?: string | undefined;
+  readonly tolerance?: string | undefined;
 }): Promise<LoadedPlan> {
   const bench = await readBench(wanted.bench);
   const drivers = await readBenchDrivers(bench);
@@ -45,5 +52,31 @@ export async function loadPlan(wanted: {
     planDrivers(drivers),
     stepKinds,
   );
-  return { plan, files: { procedure, bench, modules: [first, ...others], drivers } };
+  const baseline = await baselineFor(wanted, procedure);
+  return {
+    plan,
+    files: { procedure, bench, modules: [first, ...others], drivers },
+    ...(baseline === undefined ? {} : { baseline }),
+  };
+}
+
+async function baselineFor(
+  {
+    baseline,
+    tolerance,
+  }: { readonly baseline?: string | undefined; readonly tolerance?: string | undefined },
+  procedure: FileRead<Procedure>,
+): Promise<LoadedBaseline | undefined> {
+  if (baseline === undefined) {
+    if (tolerance !== undefined) throw new NoBaselineError(tolerance);
+    return undefined;
+  }
+  // A path in a procedure starts from its folder, as a driver's does from that of its bench.
+  return tolerance === undefined && procedure.value.tolerance !== undefined
+    ? loadBaseline({
+        run: baseline,
+        tolerance: procedure.value.tolerance,
+        relativeTo: dirname(procedure.path),
+      })
+    : loadBaseline({ run: baseline, tolerance: tolerance ?? defaultTolerance, relativeTo: '.' });
 }

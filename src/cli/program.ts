@@ -50,6 +50,11 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     .requiredOption('--bench <file>', 'the bench: instruments, leads, hard limits')
     .requiredOption('--module <file...>', 'the module under test; repeated, in the order of the circuit')
     .option('--runs <folder>', 'where records are kept', 'runs')
+    .option('--baseline <run>', 'judge also what changed since this earlier record')
+    .option(
+      '--tolerance <file>',
+      'how far it may be from the baseline: a shipped tolerance by its name, or a file',
+    )
     .option('--yes', 'acknowledge the cautions beforehand (for unattended benches)')
     .option('--dry-run', 'show what would be done, and touch nothing')
     .addOption(json())
@@ -68,6 +73,22 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     .action(async (run: string, options: { strict?: boolean; json?: boolean }) => {
       const { analyseRecord } = await import('./analyse.js');
       done(analyseRecord({ run, ...options }, streams));
+    });
+
+  command(
+    'compare <earlier> <later>',
+    'two records side by side: what changed, what did not, what can not be told',
+    'railproof compare fixtures/runs/20261130T091500Z-K1-real-limit fixtures/runs/20261130T091500Z-K1-real-limit',
+  )
+    .option(
+      '--tolerance <file>',
+      'what must have changed and what must not: a shipped tolerance by its name, or a file',
+      'unchanged',
+    )
+    .addOption(json())
+    .action(async (earlier: string, later: string, options: { tolerance: string; json?: boolean }) => {
+      const { compareRecords } = await import('./compare.js');
+      done(await compareRecords({ earlier, later, ...options }, streams));
     });
 
   command(
@@ -133,7 +154,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
 
   command(
     'schema <kind>',
-    'the JSON Schema of a kind of file (module, bench, driver, procedure), for editors',
+    'the JSON Schema of a kind of file (module, bench, driver, procedure, tolerance), for editors',
     'railproof schema procedure > procedure.schema.json',
   ).action(async (kind: string) => {
     const { schema } = await import('./schema.js');
@@ -144,7 +165,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
 }
 
 const exitStatusHelp = `
-Exit status: 0 conforms, or nothing to judge; 1 does not conform; 2 undecided; 3 stopped by a guard or by
+Exit status: 0 conforms, or nothing to judge; 1 does not conform, or changed; 2 undecided; 3 stopped by a guard or by
 the operator; 64 usage; 65 bad file; 66 missing file; 69 instrument unreachable or lost; 70 a fault of ours;
 74 a file could not be written.
 `;

@@ -31,7 +31,13 @@ export interface RunWanted {
 
 /** `railproof run`: performs a procedure and prints what it shows. */
 export async function run(wanted: RunWanted, streams: Streams): Promise<ExitCode> {
-  const loaded = await loadPlan({ ...wanted, modules: wanted.module });
+  const loaded = await loadPlan({
+    procedure: wanted.procedure,
+    bench: wanted.bench,
+    modules: wanted.module,
+    baseline: wanted.baseline,
+    tolerance: wanted.tolerance,
+  });
   if (wanted.dryRun === true) {
     streams.stdout.write(wanted.json === true ? jsonText(planAsJson(loaded.plan)) : planAsText(loaded.plan));
     return exitCodes.conforms;

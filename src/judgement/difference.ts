@@ -25,7 +25,7 @@ export interface Difference {
   /** 95 %: U = √(U₁² + U₂²). Null where neither side has one. */
   readonly expanded: number | null;
   /** Δ/√(U₁² + U₂²); null where there is no uncertainty to measure the difference by. */
-  readonly normalized: number | null;
+  readonly normalizedError: number | null;
   /** Of the earlier value; null where that is not clearly other than nothing. */
   readonly share: Ratio | null;
 }
@@ -59,7 +59,7 @@ export function differenceOf(before: Measured, after: Measured): Difference {
     dimension: before.dimension === 'temperature' ? 'temperature-difference' : before.dimension,
     standardUncertainty: together(before.standardUncertainty, after.standardUncertainty),
     expanded,
-    normalized: expanded === null || expanded === 0 ? null : value / expanded,
+    normalizedError: expanded === null || expanded === 0 ? null : value / expanded,
     share: earlier > (halfWidth(before) ?? 0) ? value / earlier : null,
   };
 }

@@ -5,7 +5,18 @@ import { afterAll, describe, expect, it } from 'vitest';
 import { ended, railproof, start } from '../whole/railproof.js';
 
 const folder = mkdtempSync(join(tmpdir(), 'railproof-help-'));
-const commands = ['run', 'analyse', 'check', 'drivers', 'ports', 'simulate', 'safe', 'runs', 'schema'];
+const commands = [
+  'run',
+  'analyse',
+  'compare',
+  'check',
+  'drivers',
+  'ports',
+  'simulate',
+  'safe',
+  'runs',
+  'schema',
+];
 
 afterAll(() => {
   rmSync(folder, { recursive: true, force: true });

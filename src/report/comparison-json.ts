@@ -1,0 +1,101 @@
+import type { Compared } from '../judgement/compare.js';
+import type { Comparable, Difference } from '../judgement/difference.js';
+import type { Expected } from '../record/baseline.js';
+import type { Dimension } from '../quantity/quantity.js';
+import { toJsonUnit, ucumCode } from '../quantity/ucum.js';
+import { type ComparedRecords, outcomeOf } from './comparison.js';
+import { endedHow, type Result } from './result.js';
+
+/** The name and version of the format; the number changes when a reader would have to. */
+export const comparisonFormat = 'railproof/compare 1';
+
+/**
+ * A comparison as one JSON object. Numbers are in the unit beside them, named by its UCUM code; a ratio is in
+ * %, and so is the share of a difference in the earlier value.
+ */
+export function comparisonAsJson(records: ComparedRecords): object {
+  const { before, after, tolerance, comparison } = records;
+  return {
+    format: comparisonFormat,
+    before: sideAsJson(before),
+    after: sideAsJson(after),
+    sameModules: comparison.sameModules,
+    tolerance: { name: tolerance.name, title: tolerance.title },
+    outcome: outcomeOf(records),
+    findings: comparison.findings.map(comparedAsJson),
+    inNeither: comparison.inNeither.map(({ finding }) => finding),
+  };
+}
+
+function sideAsJson(result: Result): object {
+  const { run, header, integrity } = result;
+  const { how, reason } = endedHow(result);
+  return {
+    run,
+    modules: header.modules.map(({ name }) => name),
+    procedure: header.procedure.name,
+    began: header.began,
+    ended: how === 'failed' ? 'stopped' : how,
+    reason,
+    integrity,
+  };
+}
+
+function comparedAsJson(compared: Compared): object {
+  const { finding, before, after, difference, expected, tolerance, verdict, outcome, probability, note } =
+    compared;
+  return {
+    name: finding,
+    before: before === undefined ? null : findingAsJson(before),
+    after: after === undefined ? null : findingAsJson(after),
+    difference: difference === undefined ? null : differenceAsJson(difference),
+    normalizedError: difference?.normalizedError ?? null,
+    expected: expected === undefined ? null : expectedAsJson(expected),
+    tolerance:
+      tolerance === undefined || difference === undefined
+        ? null
+        : { value: toJsonUnit(tolerance, difference.dimension), unit: ucumCode(difference.dimension) },
+    verdict,
+    outcome,
+    probability,
+    note,
+  };
+}
+
+function findingAsJson({ value, dimension, standardUncertainty, interval, bound, note }: Comparable): object {
+  return {
+    value: typeof value === 'number' && dimension !== null ? toJsonUnit(value, dimension) : value,
+    unit: dimension === null ? null : ucumCode(dimension),
+    standardUncertainty: inUnit(standardUncertainty, dimension),
+    interval: interval === null ? null : interval.map((end) => inUnit(end, dimension)),
+    bound: bound ?? null,
+    note,
+  };
+}
+
+function differenceAsJson(difference: Difference): object {
+  const { value, dimension, standardUncertainty, expanded, share } = difference;
+  return {
+    value: toJsonUnit(value, dimension),
+    unit: ucumCode(dimension),
+    standardUncertainty: inUnit(standardUncertainty, dimension),
+    expandedUncertainty: inUnit(expanded, dimension),
+    coverage: expanded === null ? null : 0.95,
+    share: share === null ? null : toJsonUnit(share, 'ratio'),
+  };
+}
+
+function expectedAsJson(expected: Expected): object {
+  switch (expected.kind) {
+    case 'within':
+      return { kind: 'within' };
+    case 'same':
+      return { kind: 'same' };
+    case 'becomes':
+      return { kind: 'becomes', word: expected.word };
+  }
+}
+
+function inUnit(value: number | null, dimension: Dimension | null): number | null {
+  return value === null || dimension === null ? value : toJsonUnit(value, dimension);
+}

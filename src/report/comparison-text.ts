@@ -1,0 +1,119 @@
+import { allowedInWords, changeInWords, valueInWords } from '../judgement/change-in-words.js';
+import type { Compared } from '../judgement/compare.js';
+import type { Verdict } from '../judgement/verdict.js';
+import { alignTable } from './align.js';
+import { changesInWords } from './changes.js';
+import { type ComparedRecords, outcomeOf } from './comparison.js';
+import { printable, printableData } from './printable.js';
+import { endedHow, type Result } from './result.js';
+import type { Style } from './style.js';
+
+/** What changed between two records, for a terminal or a text file: the answer first, then the table. */
+export function comparisonAsText(records: ComparedRecords, style: Style): string {
+  return [
+    heading(records, style),
+    ...warnings(records).map((line) => style.warn(line)),
+    answer(records, style),
+    table(records, style),
+    absent(records),
+  ]
+    .filter((part) => part !== '')
+    .join('\n\n')
+    .concat('\n');
+}
+
+function heading({ before, after, tolerance }: ComparedRecords, style: Style): string {
+  return [
+    style.strong(`${modulesOf(after)}: what changed`),
+    ...alignTable([rowOf('before', before), rowOf('after', after)], ['left', 'left', 'left', 'left']),
+    `tolerance ${printable(tolerance.name)}: ${printable(tolerance.title)}`,
+  ].join('\n');
+}
+
+function rowOf(when: string, { run, header }: Result): readonly string[] {
+  const began = header.began.replace('T', ' ').replace(/:\d\d(\.\d+)?Z$/, ' UTC');
+  return [when, printable(run), printable(header.procedure.name), printable(began)];
+}
+
+function modulesOf({ header }: Result): string {
+  return printable(header.modules.map(({ name }) => name).join(', '));
+}
+
+function warnings({ before, after, comparison }: ComparedRecords): readonly string[] {
+  const different = comparison.sameModules
+    ? []
+    : [
+        `DIFFERENT MODULES: the earlier record is of ${modulesOf(before)}, the later one of ${modulesOf(after)}.`,
+      ];
+  return [...different, ...[before, after].flatMap(endOf)];
+}
+
+function endOf(result: Result): readonly string[] {
+  const { integrity } = result;
+  const run = printable(result.run);
+  const { how, reason } = endedHow(result);
+  if (integrity.kind === 'damaged')
+    return [
+      `DAMAGED RECORD: ${run}, line ${integrity.line} of its journal: ${printable(integrity.problem)}.`,
+    ];
+  if (how === 'cut-off') return [`CUT OFF: ${run} ends without an end; only what is whole is compared.`];
+  return how === 'completed'
+    ? []
+    : [`${how.toUpperCase()}: ${run}: ${printable(reason ?? 'no reason is given')}`];
+}
+
+const outcomes = {
+  conforms: 'As it should be.',
+  'does-not-conform': 'NOT AS IT SHOULD BE.',
+  undecided: 'Not all can be told.',
+} as const;
+
+function answer(records: ComparedRecords, style: Style): string {
+  const sentences = changesInWords(printableData(records.comparison));
+  return [style.strong(outcomes[outcomeOf(records)]), ...sentences].join('\n');
+}
+
+const verdicts: Readonly<Record<Verdict, string>> = {
+  'unchanged-within-tolerance': 'unchanged within tolerance',
+  unchanged: 'unchanged',
+  changed: 'changed',
+  'cannot-tell': 'cannot tell',
+  'only-before': 'only before',
+  'only-after': 'only after',
+  'not-compared': 'not compared',
+};
+
+function table({ comparison }: ComparedRecords, style: Style): string {
+  const { findings } = printableData(comparison);
+  if (findings.length === 0) return 'No findings: the records hold too little.';
+  const head = ['finding', 'before', 'after', 'difference ± U', 'E_n', 'allowed', 'verdict', ''];
+  const lines = alignTable(
+    [head, ...findings.map(cellsOf)],
+    ['left', 'right', 'right', 'left', 'right', 'left', 'left', 'left'],
+  );
+  return [
+    style.strong('Findings') + '   U = √(U₁² + U₂²), 95 %; E_n = Δ/U',
+    ...lines.map((line) => `  ${line}`),
+  ].join('\n');
+}
+
+function cellsOf(compared: Compared): readonly string[] {
+  const { finding, before, after, difference, expected, verdict, outcome, note } = compared;
+  const normalizedError = difference?.normalizedError ?? null;
+  const word = verdicts[verdict];
+  return [
+    finding,
+    before === undefined ? '' : valueInWords(before),
+    after === undefined ? '' : valueInWords(after),
+    difference === undefined ? '' : changeInWords(compared),
+    normalizedError === null ? '' : normalizedError.toFixed(2).replace(/^-(0\.00)$/, '$1'),
+    expected === undefined ? '' : allowedInWords(expected, compared),
+    outcome === 'does-not-conform' ? word.toUpperCase() : word,
+    note,
+  ];
+}
+
+function absent({ comparison }: ComparedRecords): string {
+  const names = comparison.inNeither.map(({ finding }) => printable(finding));
+  return names.length === 0 ? '' : `In neither record: ${names.join(', ')}.`;
+}
