@@ -14,6 +14,7 @@ export const findingNames = {
   'recovery-time': 'time',
   'usable-current': 'current',
   'recommended-current': 'current',
+  'capacitor-life-ratio': 'ratio',
   'temperature-rise': 'temperature-difference',
   'thermal-time-constant': 'time',
   'thermal-drift': 'voltage-rate',

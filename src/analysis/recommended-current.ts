@@ -1,77 +1,99 @@
+import { nameplateOf } from '../circuit/nameplate.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Amperes } from '../quantity/quantity.js';
+import type { RunHeader } from '../record/run-header.js';
+import { capacitorLifeFindings } from './capacitor-life.js';
+import type { Cap, Soaked } from './derating.js';
+import { ambientFactor, marginFactor } from './derating-factors.js';
 import type { Evidence } from './evidence.js';
 import type { Factor, Finding } from './finding.js';
+import { nameplateFactor } from './nameplate-factor.js';
 import { gone } from './recovery.js';
+import { temperatureFactor } from './temperature-factor.js';
 import type { Usable } from './usable-current.js';
 
 const because = {
   limit: 'the measured limit sets it',
+  temperature: 'the limit of temperature sets it',
   'highest-tried': 'the highest current that was tried sets it',
 } as const;
 
 /**
  * `recommended-current` for continuous use: the usable current's 95 % lower bound × margin × ambient
- * factor, and never above the nameplate. Each factor is a line with its reason.
+ * factor, not above the nameplate (unless the procedure says so and a soak proved it), and so that it stays
+ * within its limit of temperature. Each factor is a line with its reason; their product with the usable
+ * current is the recommendation. Where a soak was run, `capacitor-life-ratio` says what it is good for.
  */
-export function recommendedFindings(evidence: Evidence, usable: Usable | undefined): readonly Finding[] {
-  const rated = evidence.header.modules[0]?.rated;
+export function recommendedFindings(
+  evidence: Evidence,
+  usable: Usable | undefined,
+  soaked?: Soaked,
+): readonly Finding[] {
+  const { header } = evidence;
+  const rated = ratedCurrent(header);
   if (usable === undefined || rated === undefined) return [];
   const { value, interval, step } = usable.finding;
   if (interval === null || typeof value !== 'number') return [];
-  const { margin } = evidence.header.derating;
   const low = Math.max(0, interval[0]);
-  const derated = low * margin;
-  const failed = gone(evidence);
-  const capped = failed ? 0 : Math.min(derated, rated.current);
   const factors: Factor[] = [
     {
       name: 'lower bound',
       factor: value > 0 ? low / value : 0,
       reason: `down to the lower end of its 95 % interval, ${formatQuantity(low, 'current', { significant: 4 })}`,
     },
-    {
-      name: 'margin',
-      factor: margin,
-      reason: 'asked for by the procedure: ageing, warmer days, and warming that no soak measured',
-    },
-    {
-      name: 'ambient',
-      factor: 1,
-      reason: 'no derating over temperature was given; it holds for the surroundings of the test',
-    },
+    marginFactor(header, soaked),
+    ambientFactor(header),
   ];
-  if (failed) {
-    factors.push({
-      name: 'failure',
-      factor: 0,
-      reason:
-        'it gave no voltage again, even after its input was cycled: not to be used before it is known why',
-    });
-  } else if (derated > rated.current) {
-    factors.push({
-      name: 'nameplate',
-      factor: rated.current / derated,
-      reason: `never above the nameplate's ${formatQuantity(rated.current, 'current')}`,
-    });
+  const derated = factors.slice(1).reduce((current, { factor }) => current * factor, low);
+  let recommended = derated;
+  let sets: string | undefined = low > 0 && derated === 0 ? 'air so warm allows no load' : undefined;
+  for (const cap of caps(evidence, { rated, soaked })) {
+    const capped = cap(recommended);
+    if (capped === undefined) continue;
+    const { name, reason, current } = capped;
+    factors.push({ name, reason, factor: recommended > 0 ? current / recommended : 0 });
+    recommended = current;
+    sets = capped.sets ?? sets;
   }
   return [
     {
       name: 'recommended-current',
-      value: capped,
+      value: recommended,
       dimension: 'current',
       standardUncertainty: null,
       interval: null,
       step,
-      ...(usable.setBy === 'highest-tried' && derated <= rated.current && !failed
-        ? { bound: 'least' as const }
-        : {}),
-      note: failed
-        ? 'its failure sets it'
-        : derated > rated.current
-          ? 'the nameplate sets it'
-          : because[usable.setBy],
+      ...(usable.setBy === 'highest-tried' && sets === undefined ? { bound: 'least' as const } : {}),
+      note: sets ?? because[usable.setBy],
       budget: [],
       factors,
     },
+    ...capacitorLifeFindings(header, soaked, { recommended, rated }),
   ];
+}
+
+/** What may still lower the current, one after the other; each is given what those before it left. */
+function caps(
+  evidence: Evidence,
+  { rated, soaked }: { rated: Amperes; soaked: Soaked | undefined },
+): readonly ((current: Amperes) => Cap | undefined)[] {
+  if (gone(evidence)) return [() => failure];
+  const { header } = evidence;
+  return [
+    (current) => (current > 0 ? nameplateFactor(header, { rated, current, soaked }) : undefined),
+    (current) => (current > 0 ? temperatureFactor(header, { current, soaked }) : undefined),
+  ];
+}
+
+const failure: Cap = {
+  name: 'failure',
+  reason: 'it gave no voltage again, even after its input was cycled: not to be used before it is known why',
+  current: 0,
+  sets: 'its failure sets it',
+};
+
+/** Of what is connected. */
+function ratedCurrent({ circuit, modules }: RunHeader): Amperes | undefined {
+  const [first, ...others] = modules.map(({ rated }) => rated);
+  return first === undefined ? undefined : nameplateOf(circuit, [first, ...others]).current;
 }

@@ -1,21 +1,23 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
+import type { Soaked } from './derating.js';
 import { type Finding, measured } from './finding.js';
 import { promised, promisedErrors } from './promised-errors.js';
 import { gone, latched } from './recovery.js';
+import { thermalLimit } from './thermal-limit.js';
 
-/** The usable current, and whether a limit of the module sets it or only how far it was tried. */
+/** The usable current, and whether a limit of the module sets it, its temperature, or only how far it was tried. */
 export interface Usable {
   readonly finding: Finding;
-  readonly setBy: 'limit' | 'highest-tried';
+  readonly setBy: 'limit' | 'temperature' | 'highest-tried';
 }
 
 /**
- * `usable-current`: the largest current at which the module stays within the sag and is steady. It is the
- * lower of the dropout and of the edge of steadiness, lower by what each can be relied on for: the lower
- * ends of their intervals. Where neither was reached it is the highest current that was held, and then it
- * is a least value.
+ * `usable-current`: the largest current at which the module stays within the sag, is steady, and settles
+ * within its limit of temperature where a soak settled beyond it. It is the lowest of the dropout, the edge
+ * of steadiness and that thermal limit, lowest by what each can be relied on for: the lower ends of their
+ * intervals. Where none was reached it is the highest current that was held, and then it is a least value.
  */
 export function usableCurrent(
   evidence: Evidence,
@@ -23,22 +25,22 @@ export function usableCurrent(
     readonly dropout: Finding | undefined;
     readonly unsteady: Finding | undefined;
     readonly held: readonly CurvePoint[];
+    readonly soaked?: Soaked | undefined;
   },
 ): Usable | undefined {
   const latch = afterOverload(evidence);
+  const thermal = thermalLimit(evidence, found.soaked);
   const lowest = [
-    { limit: found.unsteady, because: 'above that its output swings' },
-    { limit: found.dropout, because: 'above that it drops out' },
+    { limit: found.unsteady, because: 'above that its output swings', setBy: 'limit' as const },
+    { limit: found.dropout, because: 'above that it drops out', setBy: 'limit' as const },
+    { limit: thermal, because: thermal?.note ?? '', setBy: 'temperature' as const },
   ]
-    .flatMap(({ limit, because }) => (limit === undefined ? [] : [{ limit, because }]))
+    .flatMap(({ limit, ...rest }) => (limit === undefined ? [] : [{ limit, ...rest }]))
     .sort((one, other) => lowerEnd(one.limit) - lowerEnd(other.limit))
     .at(0);
   if (lowest === undefined) return highestHeld(evidence, found.held, latch);
-  const { limit, because } = lowest;
-  return {
-    finding: { ...limit, name: 'usable-current', note: `${because}${latch}` },
-    setBy: 'limit',
-  };
+  const { limit, because, setBy } = lowest;
+  return { finding: { ...limit, name: 'usable-current', note: `${because}${latch}` }, setBy };
 }
 
 function afterOverload(evidence: Evidence): string {
