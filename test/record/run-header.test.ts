@@ -2,7 +2,7 @@ import { mkdirSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { makeRunFolder, writeHeader } from '../../src/record/run-folder.js';
-import { readHeader } from '../../src/record/run-header.js';
+import { readHeader, type RunHeader } from '../../src/record/run-header.js';
 import { someHeader } from './some-header.js';
 import { temporaryFolder } from './some-run.js';
 
@@ -21,6 +21,20 @@ describe('the header of a record', () => {
     const folder = makeRunFolder(place('runs'), began, 'K1', 'real-limit');
     writeHeader(folder, someHeader);
     expect(readHeader(folder.path).header).toEqual(someHeader);
+  });
+
+  it('carries all of a derating, and one from before there was more of it still reads', () => {
+    const derating: RunHeader['derating'] = {
+      ...someHeader.derating,
+      ambient: { expected: 45, fullTo: 40, fallingTo: 0.5, at: 60 },
+      lossModel: { fixed: 0.1 },
+      temperatureLimit: 85,
+    };
+    const folder = recordWith(JSON.stringify({ ...someHeader, derating }));
+    expect(readHeader(folder).header.derating).toEqual(derating);
+    const before = { margin: 0.8, aboveNameplate: 'never' };
+    const old = recordWith(JSON.stringify({ ...someHeader, derating: before }));
+    expect(readHeader(old).header.derating).toEqual(before);
   });
 
   it.each([
