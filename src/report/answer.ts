@@ -1,22 +1,37 @@
 import { type Finding, findingNamed } from '../analysis/finding.js';
+import { compareWithBaseline } from '../judgement/compare.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes } from '../quantity/quantity.js';
+import { changesInWords } from './changes.js';
 import { inOneLine } from './finding-text.js';
 import { endedHow, type Result } from './result.js';
 
 /** What the technician came for, in a few sentences, the first of which is what to do. Empty when nothing was found. */
 export function answer(result: Result): readonly string[] {
+  return [...advice(result), ...sinceBaseline(result)];
+}
+
+/** How hard it may be worked, and why. */
+function advice(result: Result): readonly string[] {
   const recommended = findingNamed(result.findings, 'recommended-current');
   const usable = findingNamed(result.findings, 'usable-current');
   if (recommended === undefined || usable === undefined) return [];
   const current = Number(recommended.value);
-  const advice = current > 0 ? `load it continuously with up to ${roundedDown(current)}` : 'do not load it';
-  const sentence = endedHow(result).how === 'completed' ? advice : `as far as the run went, ${advice}`;
+  const what = current > 0 ? `load it continuously with up to ${roundedDown(current)}` : 'do not load it';
+  const sentence = endedHow(result).how === 'completed' ? what : `as far as the run went, ${what}`;
   return [
     `${sentence.charAt(0).toUpperCase()}${sentence.slice(1)}.`,
     `It delivers ${inOneLine(usable)}; ${usable.note}.`,
     ...limit(result.findings),
   ];
+}
+
+/** Which finding moved since the baseline, where there is one, and by how much. */
+function sinceBaseline({ header, findings }: Result): readonly string[] {
+  const comparison = compareWithBaseline(header, findings);
+  if (comparison === undefined || header.baseline === undefined) return [];
+  const [first = '', ...others] = changesInWords(comparison);
+  return [`Compared with ${header.baseline.run}: ${first}`, ...others];
 }
 
 /** Where it leaves regulation, where it drops out, and what it does there. */

@@ -85,15 +85,9 @@ function differenceAsJson(difference: Difference): object {
   };
 }
 
+/** How far `within` may be stands beside it, as the tolerance. */
 function expectedAsJson(expected: Expected): object {
-  switch (expected.kind) {
-    case 'within':
-      return { kind: 'within' };
-    case 'same':
-      return { kind: 'same' };
-    case 'becomes':
-      return { kind: 'becomes', word: expected.word };
-  }
+  return expected.kind === 'becomes' ? { kind: expected.kind, word: expected.word } : { kind: expected.kind };
 }
 
 function inUnit(value: number | null, dimension: Dimension | null): number | null {

@@ -16,6 +16,7 @@ export function resultAsJson(result: Result): object {
     run: result.run,
     module: result.header.modules[0]?.name ?? null,
     procedure: result.header.procedure.name,
+    ...baselineAsJson(result),
     ended: how === 'failed' ? 'stopped' : how,
     reason,
     outcome: result.outcome,
@@ -30,6 +31,13 @@ export function resultAsJson(result: Result): object {
       note,
     })),
   };
+}
+
+/** Only where there was one. */
+function baselineAsJson({ header: { baseline } }: Result): object {
+  if (baseline === undefined) return {};
+  const { run, modules, tolerance } = baseline;
+  return { baseline: { run, modules, tolerance: tolerance.name } };
 }
 
 function findingAsJson(finding: Finding): object {

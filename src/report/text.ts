@@ -46,7 +46,14 @@ function heading({ header, run }: Result, style: Style): string {
     style.strong(`${module?.name ?? '?'}: ${header.procedure.title}`),
     [description, `nameplate ${plate}`].filter((part) => part !== '').join(' · '),
     `${header.procedure.name} on ${header.bench.name}${header.bench.simulated ? ' (simulated)' : ''}, ${began}, record ${run}`,
+    ...againstWhat(header),
   ].join('\n');
+}
+
+function againstWhat({ baseline }: Result['header']): readonly string[] {
+  if (baseline === undefined) return [];
+  const { run, tolerance } = baseline;
+  return [`compared with ${run}, tolerance ${tolerance.name}: ${tolerance.title}`];
 }
 
 function warnings(result: Result, style: Style): string[] {
@@ -62,6 +69,12 @@ function warnings(result: Result, style: Style): string[] {
     lines.push('CUT OFF: the record ends without an end; what follows is what is whole.');
   if (how === 'cut-off' && result.evidence.input === 'on')
     lines.push('THE LOAD WAS ON when the record broke off: `railproof safe --bench <file>` switches it off.');
+  const { baseline, modules } = result.header;
+  const names = modules.map(({ name }) => name).join(', ');
+  if (baseline !== undefined && baseline.modules.join(', ') !== names)
+    lines.push(
+      `DIFFERENT MODULES: the baseline is of ${baseline.modules.join(', ')}, this record of ${names}.`,
+    );
   if (how === 'stopped') lines.push(`STOPPED: ${reason ?? ''}`);
   if (how === 'failed') lines.push(`FAILED: ${reason ?? ''}`);
   return lines.map((line) => style.warn(line));
