@@ -1,7 +1,7 @@
 import type { Clock } from '../clock/clock.js';
 import type { BenchDrivers } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
-import type { Simulation, SimulatedModule } from '../files/simulation-section.js';
+import type { Simulation } from '../files/simulation-section.js';
 import type { Connection } from '../instrument/connection.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { dialectFor } from './dialects/choose-dialect.js';
@@ -77,7 +77,7 @@ export function openSimulation(facts: {
 
 function worldOf(simulation: Simulation, load: Driver, random: Random): VirtualBench {
   return new VirtualBench(
-    onlyModule(simulation),
+    theCircuit(simulation),
     loadHardware(load, simulation.leads, {
       setCurrent: errorOf(simulation, 'load', load, 'set-current', random),
       setVoltage: errorOf(simulation, 'load', load, 'set-voltage', random),
@@ -88,16 +88,18 @@ function worldOf(simulation: Simulation, load: Driver, random: Random): VirtualB
   );
 }
 
-function onlyModule({ circuit, modules }: Simulation): SimulatedModule {
-  const [module, ...others] = modules;
-  if (circuit !== 'single') {
-    throw new CannotSimulateError({ what: `modules in ${circuit} yet`, advice: 'Write "circuit: single".' });
-  }
-  if (module === undefined || others.length > 0) {
+function theCircuit({ circuit, modules }: Simulation): Pick<Simulation, 'circuit' | 'modules'> {
+  if (circuit === 'single' ? modules.length !== 1 : modules.length < 2) {
     throw new CannotSimulateError({
-      what: `a single circuit of ${modules.length} modules`,
-      advice: 'Give one module in the simulation section.',
+      what: `a ${circuit} circuit of ${modules.length} modules`,
+      advice: `Give ${circuit === 'single' ? 'one module' : 'at least two modules'} in the simulation section.`,
     });
   }
-  return module;
+  if (new Set(modules.map(({ name }) => name)).size < modules.length) {
+    throw new CannotSimulateError({
+      what: 'two modules of the same name',
+      advice: 'Give each module of the simulation section a name of its own.',
+    });
+  }
+  return { circuit, modules };
 }
