@@ -65,7 +65,7 @@ function stepSchema(kind: string, parameters: JsonSchema): JsonSchema {
 }
 
 function criterionOf(findings: readonly string[]): JsonSchema {
-  return ofOneFinding(withoutDialect(asWritten(criterionSchema)), nameOf(findings, ''), [
+  return ofOneFinding(withoutDialect(asWritten(criterionSchema)), nameOf(findings), [
     'at-least',
     'at-most',
     'is',
@@ -76,7 +76,7 @@ function withEntries(schema: JsonSchema, vocabulary: Vocabulary): JsonSchema {
   const properties = schema['properties'] as Readonly<Record<string, JsonSchema>>;
   const items = ofOneFinding(
     withoutDialect(asWritten(toleranceEntrySchema)),
-    nameOf(Object.keys(vocabulary.findings), '*'),
+    nameOf(Object.keys(vocabulary.findings)),
     ['within', 'same', 'becomes'],
   );
   return { ...schema, properties: { ...properties, findings: { ...properties['findings'], items } } };
@@ -96,9 +96,8 @@ function ofOneFinding(
   };
 }
 
-/** The names of findings; `family` is what may stand for a whole family, besides the name of one of them. */
-function nameOf(findings: readonly string[], family: '' | '*'): readonly JsonSchema[] {
-  const names = findings.filter((finding) => family === '*' || !finding.endsWith('*'));
+function nameOf(findings: readonly string[]): readonly JsonSchema[] {
+  const names = findings.filter((finding) => !finding.endsWith('*'));
   const families = findings.filter((finding) => finding.endsWith('*'));
   return [{ enum: names }, ...families.map((each) => ({ pattern: `^${each.slice(0, -1)}.` }))];
 }

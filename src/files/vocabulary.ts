@@ -13,10 +13,11 @@ export interface StepKindWord {
   readonly parameters: z.ZodType;
 }
 
-/** What the finding measures, or undefined when there is none of that name. */
+/** What the finding measures, or undefined when there is none of that name; a whole family is none. */
 export function findingDimension(name: string, vocabulary: Vocabulary): Dimension | 'word' | undefined {
   const { findings } = vocabulary;
-  if (Object.hasOwn(findings, name) && !name.endsWith('*')) return findings[name];
+  if (name.endsWith('*')) return undefined;
+  if (Object.hasOwn(findings, name)) return findings[name];
   const family = Object.keys(findings).find(
     (each) => each.endsWith('*') && name.length >= each.length && name.startsWith(each.slice(0, -1)),
   );
