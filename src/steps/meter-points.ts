@@ -1,0 +1,134 @@
+import { BlindSamples, guard } from '../bench/guards.js';
+import type { OpenBench } from '../bench/open-bench.js';
+import type { Taken } from '../bench/sample.js';
+import { WrongPlaceError } from '../bench/wrong-place-error.js';
+import type { OhmReadings } from '../circuit/ohm-readings.js';
+import type { Seconds, Volts } from '../quantity/quantity.js';
+import type { Phase } from '../record/journal-event.js';
+import { RunningMoments } from '../statistics/running-moments.js';
+import type { StepContext } from './step-kind.js';
+
+type Meter = NonNullable<OpenBench['meter']>;
+
+const lookEvery: Seconds = 0.5;
+
+export interface MeterPointPlan {
+  readonly phase: Phase;
+  /** The module that the point is about. */
+  readonly of?: string;
+  /** Wait before the first reading. */
+  readonly dwell: Seconds;
+  readonly readings: number;
+}
+
+/** Points at which the meter alone is read: nothing is set, and whatever the load is connected to is off. */
+export class MeterPoints {
+  readonly #context: StepContext;
+  readonly #meter: Meter;
+  readonly #blind = new BlindSamples();
+  #count = 0;
+
+  constructor(context: StepContext, meter: Meter) {
+    this.#context = context;
+    this.#meter = meter;
+  }
+
+  /** Puts the meter in that mode, and asks it whether it is, where it can tell. @throws WrongPlaceError */
+  async measure(what: 'voltage' | 'resistance'): Promise<void> {
+    await this.#meter.perform(`measure-${what}`);
+    if (!this.#meter.reads(`measures-${what}`) || (await this.#meter.flag(`measures-${what}`))) return;
+    throw new WrongPlaceError(
+      'meter-in-wrong-mode',
+      `the meter at ${this.#meter.address} was told to measure ${what} and says that it does not`,
+      'somebody at its panel, or a driver that is not for it: `railproof drivers --try` shows what it makes of it',
+    );
+  }
+
+  /** Several readings of a voltage, as they are. */
+  async voltage(plan: MeterPointPlan): Promise<RunningMoments> {
+    const values = new RunningMoments();
+    await this.#take(plan, 'voltage', plan.dwell, (volts, samples) => {
+      values.add(volts);
+      return samples >= plan.readings;
+    });
+    return values;
+  }
+
+  /** Looks until the voltage is `below`, or `wait` is over. @returns what was read last */
+  async voltageFalls(plan: Omit<MeterPointPlan, 'readings'>, below: Volts, wait: Seconds): Promise<Volts> {
+    const end = this.#context.clock.now() + wait;
+    let last = Number.NaN;
+    await this.#take(plan, 'voltage', lookEvery, (volts) => {
+      last = volts;
+      return Math.abs(volts) < below || this.#context.clock.now() >= end;
+    });
+    return last;
+  }
+
+  /** Several readings of a resistance; an open circuit is one too. */
+  async resistance(plan: MeterPointPlan): Promise<OhmReadings> {
+    const values = new RunningMoments();
+    let open = 0;
+    await this.#take(plan, 'resistance', 0, (ohms, samples) => {
+      if (ohms === Number.POSITIVE_INFINITY) open += 1;
+      else values.add(ohms);
+      return samples >= plan.readings;
+    });
+    return { values, open };
+  }
+
+  /** Readings until `enough` of them; one without a value is none, and too many such in a row end it. */
+  async #take(
+    { phase, of, dwell }: Omit<MeterPointPlan, 'readings'>,
+    what: 'voltage' | 'resistance',
+    every: Seconds,
+    enough: (value: number, samples: number) => boolean,
+  ): Promise<void> {
+    const { journal, clock, signal, step } = this.#context;
+    signal.throwIfAborted();
+    this.#count += 1;
+    const point = this.#count;
+    const about = of === undefined ? {} : { of };
+    journal.append({ event: 'point-began', step, point, phase, set: {}, ...about });
+    await clock.sleep(Math.max(dwell, this.#meter.driver.settling), signal);
+    let seen = 0;
+    for (let sample = 1; ; sample += 1) {
+      if (sample > 1) await clock.sleep(every, signal);
+      const value = await this.#read(point, sample, what);
+      this.#blind.count(Number.isNaN(value) ? what : undefined);
+      if (Number.isNaN(value)) continue;
+      seen += 1;
+      if (enough(value, seen)) break;
+    }
+    journal.append({ event: 'point-ended', step, point, outcome: 'measured' });
+  }
+
+  /** Infinity for an open circuit, not a number where the meter has none. */
+  async #read(point: number, sample: number, what: 'voltage' | 'resistance'): Promise<number> {
+    const { bench, journal, signal, limits, step, show } = this.#context;
+    signal.throwIfAborted();
+    const at = bench.places.movedAt;
+    const where = at === undefined ? {} : { at };
+    const measurement = await this.#meter.read(what);
+    const read =
+      measurement.kind === 'value'
+        ? { value: measurement.value }
+        : { value: null, problem: measurement.kind };
+    journal.append({ event: 'reading', step, point, sample, of: 'meter', what, ...where, ...read });
+    guard([{ of: 'meter', what, ...where, measurement }], limits);
+    const value = numberIn(measurement);
+    if (what === 'voltage') show({ voltage: value });
+    return value;
+  }
+}
+
+function numberIn(measurement: Taken['measurement']): number {
+  switch (measurement.kind) {
+    case 'value':
+      return measurement.value;
+    case 'overload':
+      return Number.POSITIVE_INFINITY;
+    case 'not-a-number':
+      return Number.NaN;
+  }
+}
