@@ -40,8 +40,12 @@ export function readCriterion(
 
   const dimension = findingDimension(finding, vocabulary);
   if (dimension === undefined) {
+    const isFamily = Object.hasOwn(vocabulary.findings, finding);
     const hint = didYouMean(finding, Object.keys(vocabulary.findings));
-    return [{ path: [...path, 'finding'], message: `no finding is called ${shown(finding)}${hint}` }];
+    const message = isFamily
+      ? `${shown(finding)} is one for each module; name one: ${finding.replace('*', 'K1')}`
+      : `no finding is called ${shown(finding)}${hint}`;
+    return [{ path: [...path, 'finding'], message }];
   }
   const [form, ...more] = forms.filter((each) => Object.hasOwn(criterion, each));
   if (form === undefined || more.length > 0) {

@@ -90,14 +90,34 @@ it('a purpose may fill several lines', () => {
 it.each<[string, unknown]>([
   ['finding: load-regulation, at-most: 1 %', { kind: 'at-most', value: { kind: 'absolute', value: 0.01 } }],
   ['finding: share-of-K1, at-most: 60 %', { kind: 'at-most', value: { kind: 'absolute', value: 0.6 } }],
+  [
+    'finding: usable-current, at-least: 95 % of baseline',
+    { kind: 'at-least', value: { kind: 'share', ratio: 0.95, of: 'baseline' } },
+  ],
   ['finding: limit-style, is: constant-current', { kind: 'is', word: 'constant-current' }],
   ['finding: hogging-module, is: K2', { kind: 'is', word: 'K2' }],
 ])('a criterion: %s', (text, requirement) => {
   expect(parse(changed(criterion, text)).criteria[0]?.requirement).toEqual(requirement);
 });
 
+it('a tolerance may be named, by which it is compared with a baseline', () => {
+  expect(parse(changed('cautions:', 'tolerance: earth-link-removed\ncautions:'))).toMatchObject({
+    tolerance: 'earth-link-removed',
+  });
+});
+
 describe('one mistake is one line, at its place', () => {
   it.each<[string, string, string]>([
+    [
+      'to: 100 % of rated-current',
+      'to: 100 % of baseline',
+      "7:33: steps.1.load-ramp.to: 'baseline' is known only when all is done, so only a criterion may refer to it; a share that gives a current refers to rated-current or dropout-current",
+    ],
+    [
+      'finding: usable-current, at-least: 100 % of rated-current',
+      'finding: share-of-*, at-least: 30 %',
+      "10:16: criteria.0.finding: 'share-of-*' is one for each module; name one: share-of-K1",
+    ],
     [
       '- dropout-search:',
       '- dropout-serch:',

@@ -2,11 +2,13 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
   parseQuantity,
+  parseQuantityOrAnyShare,
   parseQuantityOrShare,
   quantityOrSharePattern,
   quantityPattern,
   QuantityError,
   readQuantity,
+  readQuantityOrAnyShare,
 } from '../../src/quantity/parse-quantity.js';
 import { dimensions, type Dimension } from '../../src/quantity/quantity.js';
 
@@ -173,6 +175,36 @@ describe('a share names what it is a share of', () => {
     ],
   ])('%j as %s', (text, dimension, message) => {
     expect(() => parseQuantityOrShare(text, dimension)).toThrow(expect.objectContaining({ message }));
+  });
+});
+
+describe('a share of the baseline', () => {
+  it.each(everyDimension)('may be one of %s', (dimension) => {
+    expect(parseQuantityOrAnyShare('120 % of baseline', dimension)).toEqual({
+      kind: 'share',
+      ratio: 1.2,
+      of: 'baseline',
+    });
+  });
+
+  it('stands beside all that a share may refer to otherwise', () => {
+    expect(readQuantityOrAnyShare('140 % of rated-current', 'current')).toEqual(
+      parseQuantityOrShare('140 % of rated-current', 'current'),
+    );
+    expect(readQuantityOrAnyShare('4 A', 'current')).toEqual({ kind: 'absolute', value: 4 });
+    expect(() => parseQuantityOrAnyShare('120 % of basline', 'resistance')).toThrow(
+      "nothing is called 'basline'; did you mean 'baseline'?",
+    );
+    expect(() => readQuantityOrAnyShare(4, 'current')).toThrow('found the bare number 4');
+  });
+
+  it('is refused where it can not be known yet', () => {
+    expect(() => parseQuantityOrShare('120 % of baseline', 'current')).toThrow(
+      "'baseline' is known only when all is done, so only a criterion may refer to it; a share that gives a current refers to rated-current or dropout-current",
+    );
+    expect(() => parseQuantityOrShare('120 % of baseline', 'time')).toThrow(
+      "'baseline' is known only when all is done, so only a criterion may refer to it; a time cannot be given as a share",
+    );
   });
 });
 

@@ -3,7 +3,7 @@ import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { makeRunFolder, writeHeader } from '../../src/record/run-folder.js';
 import { readHeader, type RunHeader } from '../../src/record/run-header.js';
-import { someHeader } from './some-header.js';
+import { someBaseline, someHeader } from './some-header.js';
 import { temporaryFolder } from './some-run.js';
 
 const place = temporaryFolder();
@@ -37,6 +37,13 @@ describe('the header of a record', () => {
     expect(readHeader(old).header.derating).toEqual(before);
   });
 
+  it('with a baseline reads back too, whatever kinds of findings that holds', () => {
+    const folder = makeRunFolder(place('compared'), began, 'K1', 'acceptance');
+    const header = { ...someHeader, baseline: someBaseline };
+    writeHeader(folder, header);
+    expect(readHeader(folder.path).header).toEqual(header);
+  });
+
   it.each([
     ['cut off', JSON.stringify(someHeader).slice(0, 100), 'it is not JSON'],
     ['empty', '', 'it is not JSON'],
@@ -50,6 +57,11 @@ describe('the header of a record', () => {
       'changed inside',
       JSON.stringify(someHeader).replace('"voltage":15', '"voltage":"15 V"'),
       'modules.0.rated.voltage: Invalid input: expected number, received string',
+    ],
+    [
+      'compared by no tolerance',
+      JSON.stringify({ ...someHeader, baseline: { ...someBaseline, tolerance: undefined } }),
+      'baseline.tolerance: Invalid input: expected object, received undefined',
     ],
     [
       'of no module',

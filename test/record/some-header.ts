@@ -1,3 +1,4 @@
+import type { Baseline } from '../../src/record/baseline.js';
 import { headerFormat, type RunHeader } from '../../src/record/run-header.js';
 
 /** What a run on K1 might have begun with. */
@@ -44,4 +45,44 @@ export const someHeader: RunHeader = {
     },
   ],
   files: [{ kind: 'module', path: 'K1.yaml', sha256: '00', text: 'railproof: module 1\n' }],
+};
+
+/** What K1 was before its earth link was removed. */
+export const someBaseline: Baseline = {
+  run: '20261101T080000Z-K1-acceptance',
+  began: '2026-11-01T08:00:00.000Z',
+  procedure: 'acceptance',
+  modules: ['K1'],
+  findings: [
+    {
+      name: 'usable-current',
+      value: 5,
+      dimension: 'current',
+      standardUncertainty: 0.01,
+      interval: [4.98, 5.02],
+      bound: 'least',
+      note: 'at least this much: no limit was met up to 5 A',
+    },
+    {
+      name: 'earth-relation',
+      value: 'bonded',
+      dimension: null,
+      standardUncertainty: null,
+      interval: null,
+      note: '',
+    },
+  ],
+  tolerance: {
+    name: 'earth-link-removed',
+    title: 'After removing the earth link and adding a reverse diode',
+    findings: [
+      { finding: 'earth-relation', expected: { kind: 'becomes', word: 'isolated' } },
+      { finding: 'usable-current', expected: { kind: 'within', limit: { kind: 'share', ratio: 0.05 } } },
+      {
+        finding: 'open-circuit-voltage',
+        expected: { kind: 'within', limit: { kind: 'absolute', value: 0.05 } },
+      },
+      { finding: 'limit-style', expected: { kind: 'same' } },
+    ],
+  },
 };

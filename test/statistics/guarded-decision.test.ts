@@ -103,6 +103,63 @@ describe('a guarded decision', () => {
     );
   });
 
+  describe('between two limits', () => {
+    const between = (value: number, expanded = 0.1, least = 4, most = 5): GuardedValue => ({
+      value,
+      standardUncertainty: expanded / 2,
+      expanded,
+      requirement: { kind: 'between', least, most },
+    });
+
+    it.each([
+      [4.5, 'conforms'],
+      [4.1, 'conforms'],
+      [4.9, 'conforms'],
+      [4.09, 'undecided'],
+      [4.91, 'undecided'],
+      [3.9, 'undecided'],
+      [5.1, 'undecided'],
+      [3.89, 'does-not-conform'],
+      [5.11, 'does-not-conform'],
+    ])('of 4 and 5, %d ± 0.1: %s', (value, outcome) => {
+      expect(decide(between(value)).outcome).toBe(outcome);
+    });
+
+    it('closer than its guard bands accepts nothing', () => {
+      expect(decide(between(4.5, 0.51)).outcome).toBe('undecided');
+      expect(decide(between(4.5, 0.5)).outcome).toBe('conforms');
+    });
+
+    it('is as probable as both its sides together, and keeps its digits far out', () => {
+      fc.assert(
+        fc.property(decimals, decimals, decimals, (value, one, other) => {
+          const [least, most] = [Math.min(one, other), Math.max(one, other)];
+          const measured = between(value, 4, least, most);
+          const above = decide({ ...measured, requirement: { kind: 'at-least', limit: least } });
+          const below = decide({ ...measured, requirement: { kind: 'at-most', limit: most } });
+          const { probability } = decide(measured);
+          expect(probability).toBeGreaterThanOrEqual(0);
+          expect(probability).toBeCloseTo(above.probability + below.probability - 1, 12);
+        }),
+      );
+      // Ten standard uncertainties above the upper limit; the lower one is another ten away.
+      const far = decide(between(6, 0.2));
+      const upper = decide({ ...between(6, 0.2), requirement: { kind: 'at-most', limit: 5 } });
+      expect(far.probability / upper.probability).toBeCloseTo(1, 12);
+      expect(far.probability).toBeGreaterThan(0);
+    });
+
+    it('without uncertainty is met on its limits', () => {
+      expect(decide(between(5, 0))).toEqual({ outcome: 'conforms', probability: 1 });
+      expect(decide(between(5.001, 0))).toEqual({ outcome: 'does-not-conform', probability: 0 });
+    });
+
+    it('refuses limits in the wrong order, or that are no numbers', () => {
+      expect(() => decide(between(4.5, 0.1, 5, 4))).toThrow('the limits are 5 and 4, in the wrong order');
+      expect(() => decide(between(4.5, 0.1, 4, Number.NaN))).toThrow('the limit is NaN');
+    });
+  });
+
   it('refuses what is no number', () => {
     expect(() => decide({ ...usable, value: Number.NaN })).toThrow(/the value is NaN/);
     expect(() => decide({ ...usable, requirement: { kind: 'at-most', limit: Infinity } })).toThrow(
