@@ -1,5 +1,5 @@
 import { answerFindings } from './answers.js';
-import { heldPoints, stepsOf } from './curve.js';
+import { coldPoints, heldPoints, stepsOf } from './curve.js';
 import { dropoutBracket, dropoutFindings } from './dropout.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, findingNamed } from './finding.js';
@@ -22,7 +22,8 @@ export function analyse(evidence: Evidence): readonly Finding[] {
   const unsteady = steadinessFindings(evidence, held);
   const edge = numberNamed('unsteady-above-current', unsteady) ?? Number.POSITIVE_INFINITY;
   const steady = held.filter((point) => point.current < edge);
-  const knee = findKnee(steady);
+  const cold = coldPoints(steady);
+  const knee = findKnee(cold);
   const ramp = new Set(stepsOf(evidence, 'load-ramp').map((step) => step.step));
   const regulated = steady.filter(
     (point) => ramp.has(point.step) && point.current < (knee?.breakpoint ?? Number.POSITIVE_INFINITY),
@@ -45,7 +46,7 @@ export function analyse(evidence: Evidence): readonly Finding[] {
     ...recommendedFindings(evidence, usable),
     ...idle,
     ...regulation,
-    ...onsetFindings(evidence, steady, knee),
+    ...onsetFindings(evidence, cold, knee),
     ...unsteady,
     ...dropout,
     ...style,

@@ -1,5 +1,6 @@
 import type { Amperes } from '../quantity/quantity.js';
 import type { LineFit } from '../statistics/line-fit.js';
+import { type BothWays, bothWays, bothWaysNote } from './both-ways.js';
 import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
@@ -14,7 +15,8 @@ const stretch = 1.05;
  * a straight line V = V0 − R·I through the regulated points, with the residuals' uncertainties
  * (JCGM 100:2008, H.3) and the instruments' promises. A gain error scales the slope that was read, whether
  * it is the voltage's or the current's; an offset leaves it alone; both move V0. Where the voltage is read
- * at the load, the slope that was read is that of the module and the leads together.
+ * at the load, the slope that was read is that of the module and the leads together. A ramp that went back
+ * down gives the mean of both ways at each current.
  * @param points held, steady, below the onset of the limit; by rising current.
  */
 export function regulationFindings(
@@ -22,13 +24,14 @@ export function regulationFindings(
   points: readonly CurvePoint[],
   openCircuitKnown: boolean,
 ): readonly Finding[] {
+  const ways = bothWays(points, moduleVoltageErrors(evidence.header).instrument.resolution);
   const fit = lineOverCurrent(
-    points.map((point) => point.current),
-    points.map((point) => point.voltage),
+    ways.places.map((place) => place.current),
+    ways.places.map((place) => place.voltage),
   );
   if (fit === undefined) return [];
   const step = points[0]?.step ?? null;
-  const droop = droopFinding(evidence, fit, step);
+  const droop = droopFinding(evidence, fit, step, ways);
   const reaches = (points.at(-1)?.current ?? 0) * stretch;
   return [
     ...(openCircuitKnown ? [] : [interceptFinding(evidence, fit, step)]),
@@ -37,7 +40,7 @@ export function regulationFindings(
   ];
 }
 
-function droopFinding(evidence: Evidence, fit: LineFit, step: number | null): Finding {
+function droopFinding(evidence: Evidence, fit: LineFit, step: number | null, ways: BothWays): Finding {
   const { instrument: voltage, leads } = moduleVoltageErrors(evidence.header);
   const current = promisedErrors(evidence.header, 'load', 'current');
   const droop = -fit.slope;
@@ -57,7 +60,7 @@ function droopFinding(evidence: Evidence, fit: LineFit, step: number | null): Fi
       promised(`${current.of}, gain`, current.gain * slopeRead),
       ...(leads === 0 ? [] : [promised('resistance of the leads', leads)]),
     ],
-    { step, note: `straight line through ${fit.points} points` },
+    { step, note: `straight line through ${fit.points} points${bothWaysNote(ways)}` },
   );
 }
 

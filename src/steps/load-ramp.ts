@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { count, quantity, quantityOrShare } from '../files/building-blocks.js';
 import { formatShare } from '../quantity/format-quantity.js';
-import type { Seconds } from '../quantity/quantity.js';
+import type { Amperes, QuantityOrShare, Seconds } from '../quantity/quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
 import { defineStep } from './define-step.js';
 import { longestDwell } from './dwell.js';
@@ -10,6 +10,7 @@ import { openCircuitVoltage } from './known-voltage.js';
 import { Points } from './point.js';
 import { comeBack } from './recover.js';
 import { ModuleStaysOffError } from './step-error.js';
+import type { StepContext } from './step-kind.js';
 
 const readingTime = 0.1;
 /** How long a module that did not hold a point may take to come back. */
@@ -17,7 +18,8 @@ const patience: Seconds = 10;
 
 export const loadRamp = defineStep({
   kind: 'load-ramp',
-  summary: 'constant-current points upwards: droop, regulation, lead resistance, steadiness',
+  summary:
+    'constant-current points upwards, and back down where asked: droop, regulation, lead resistance, steadiness',
   parameters: z.strictObject({
     from: quantityOrShare('current', 'the first point', { least: 0 }).prefault('0 A'),
     to: quantityOrShare('current', 'the last point', { above: 0 }),
@@ -35,29 +37,29 @@ export const loadRamp = defineStep({
         most: 0.5,
       },
     ).prefault('20 %'),
+    back: z
+      .boolean()
+      .default(false)
+      .describe('whether the same points are taken again downwards, so that warming does not pass for droop'),
   }),
   measures: [],
   needs: { liveModule: true, operator: 'never' },
   references: ({ from, to }) => ({ from, to }),
   currents: ['from', 'to'],
   rises: { from: 'from', to: 'to', mayBeLevel: true },
-  describe: ({ points, from, to }) =>
-    `${points} points from ${formatShare(from, 'current')} to ${formatShare(to, 'current')}`,
-  duration: ({ points, dwell, readings }) => points * (dwell + readings * readingTime),
+  describe: ({ points, from, to, back }) =>
+    `${points} points from ${formatShare(from, 'current')} to ${formatShare(to, 'current')}${back ? ' and back' : ''}`,
+  duration: ({ points, dwell, readings, back }) => (back ? 2 : 1) * points * (dwell + readings * readingTime),
   async perform(parameters, context) {
     const { load } = context.bench;
-    const from = resolve(parameters.from, context.known);
-    const to = resolve(parameters.to, context.known);
     const voltage = openCircuitVoltage(context);
+    const least = voltage * (1 - parameters.sag);
     await load.unload();
     await load.inputOn();
     const points = new Points(context);
-    for (let index = 0; index < parameters.points; index += 1) {
-      const share = index / (parameters.points - 1);
-      // The last one exactly: rounding must not carry it beyond what the bench allows.
-      const current = share === 1 ? to : from + (to - from) * share;
+    for (const { phase, current } of pointsOf(parameters, context)) {
       const { outcome } = await points.take({
-        phase: 'ramp',
+        phase,
         set: { current },
         dwell: parameters.dwell,
         readings: parameters.readings,
@@ -69,7 +71,7 @@ export const loadRamp = defineStep({
           event: 'notice',
           text: 'the module did not hold this point; the ramp ends here',
         });
-        const back = await comeBack(context, points, voltage * (1 - parameters.sag), patience);
+        const back = await comeBack(context, points, least, patience);
         if (back === 'stayed-off') throw new ModuleStaysOffError(false);
         await load.unload();
         return;
@@ -80,3 +82,32 @@ export const loadRamp = defineStep({
     await load.inputOff();
   },
 });
+
+interface RampPoint {
+  readonly phase: 'ramp' | 'down';
+  readonly current: Amperes;
+}
+
+/**
+ * Upwards, and then the same downwards, the highest twice: so each current is met as long before the turning
+ * as after it.
+ */
+function pointsOf(
+  given: {
+    readonly from: QuantityOrShare;
+    readonly to: QuantityOrShare;
+    readonly points: number;
+    readonly back: boolean;
+  },
+  { known }: StepContext,
+): readonly RampPoint[] {
+  const from = resolve(given.from, known);
+  const to = resolve(given.to, known);
+  const up = Array.from({ length: given.points }, (_, index): RampPoint => {
+    const share = index / (given.points - 1);
+    // The last one exactly: rounding must not carry it beyond what the bench allows.
+    return { phase: 'ramp', current: share === 1 ? to : from + (to - from) * share };
+  });
+  const down = up.map(({ current }): RampPoint => ({ phase: 'down', current })).reverse();
+  return given.back ? [...up, ...down] : up;
+}

@@ -14,7 +14,7 @@ export interface Seen {
   readonly t: Seconds;
   /** At the module. */
   readonly voltage: Volts;
-  /** Not a number when it could not be read, which is let pass while no current is set. */
+  /** Not a number when it could not be read, which is let pass while the load's input is off. */
   readonly current: Amperes;
   /** The voltages read elsewhere than at the usual place, by where. Those that could not be read are not there. */
   readonly taps: ReadonlyMap<string, Volts>;
@@ -83,7 +83,7 @@ export class Points {
 
   /**
    * One point: set, wait, read several times; everything is in the journal before the next thing happens,
-   * and every sample has passed the guards. A sample in which the voltage, or the current that was set,
+   * and every sample has passed the guards. A sample in which the voltage, or the current while one flows,
    * could not be read is not judged, and the point ends with none such.
    * @throws LoadSwitchedOffError when the load's input is off and the module's voltage is there; the point
    * then ends without an outcome.
@@ -120,7 +120,7 @@ export class Points {
     for (let sample = 1; ; sample += 1) {
       if (sample > 1) await clock.sleep(plan.every ?? stagger(sample), signal);
       const seen = await this.#sample(point, sample, plan);
-      const unread = unreadIn(seen, set);
+      const unread = unreadIn(seen, plan.set);
       this.#blind.count(unread);
       if (unread !== undefined) continue;
       voltage.add(seen.voltage);
@@ -202,10 +202,12 @@ function temperatureIn(taken: readonly Taken[]): Celsius | undefined {
   return Number.isNaN(celsius) ? undefined : celsius;
 }
 
+/** With a voltage set the current is the module's doing, so it must be seen as well as one that was set. */
 function unreadIn(
   { voltage, current }: Pick<Seen, 'voltage' | 'current'>,
-  set: Amperes | undefined,
+  set: SetPoint,
 ): 'voltage' | 'current' | undefined {
   if (Number.isNaN(voltage)) return 'voltage';
-  return set !== undefined && Number.isNaN(current) ? 'current' : undefined;
+  const flowing = set.current !== undefined || set.voltage !== undefined;
+  return flowing && Number.isNaN(current) ? 'current' : undefined;
 }

@@ -1,4 +1,6 @@
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Celsius, Volts } from '../quantity/quantity.js';
 
 /** The person at the bench was asked for a quantity and never gave one. */
 export class AnswerNotUnderstoodError extends RailproofError {
@@ -29,5 +31,37 @@ export class ModuleStaysOffError extends RailproofError {
         : 'the module stays off after an overload, and nobody is here to cycle its input',
       { advice: 'do not use it before it is known why' },
     );
+  }
+}
+
+/** A trace goes downwards, and was asked to go up. */
+export class TraceRisesError extends RailproofError {
+  readonly code = 'TRACE_RISES';
+  readonly exitCode = exitCodes.stopped;
+  readonly from: Volts;
+  readonly to: Volts;
+
+  constructor(from: Volts, to: Volts) {
+    const [first, last] = [from, to].map((volts) => formatQuantity(volts, 'voltage', { significant: 4 }));
+    super(`a limit-trace goes downwards, and was asked to go from ${String(first)} to ${String(last)}`, {
+      advice: "lower its 'to', or raise its 'from'",
+    });
+    this.from = from;
+    this.to = to;
+  }
+}
+
+/** A soak must end at a temperature that nobody measures. */
+export class NoThermometerError extends RailproofError {
+  readonly code = 'NO_THERMOMETER';
+  readonly exitCode = exitCodes.stopped;
+  readonly limit: Celsius;
+
+  constructor(limit: Celsius) {
+    super(
+      `the soak shall end at ${formatQuantity(limit, 'temperature')}, and the bench has no thermometer to tell`,
+      { advice: "give the bench a thermometer, or leave out the soak's limit and stay with the module" },
+    );
+    this.limit = limit;
   }
 }

@@ -15,6 +15,7 @@ import { evenly, evidenceOf, headerOf, type Point } from './evidence-of.js';
 function pointsOf(...deviations: readonly number[]): readonly CurvePoint[] {
   return deviations.map((deviation, current) => ({
     step: 1,
+    phase: 'ramp',
     set: current,
     current,
     voltage: 15,
@@ -49,8 +50,8 @@ describe('the edge of steadiness', () => {
   it('is not hidden by the many points that a search takes near the limit', () => {
     const deviationAt = (current: number): number => (current < 2 ? 0.001 : 0.08);
     const points = [...evenly(0, 4, 21), ...evenly(4, 5.3, 30)].map((current) => ({
-      ...pointsOf(0)[0],
       step: 1,
+      phase: 'ramp' as const,
       set: current,
       current,
       voltage: 15,
