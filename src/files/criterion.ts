@@ -77,11 +77,9 @@ function readRequirement(
 }
 
 function bound(description: string): z.ZodUnknown {
-  return z
-    .unknown()
-    .meta({
-      type: 'string',
-      description,
-      examples: ['4 A', '100 % of rated-current', '120 % of baseline', '1 %'],
-    });
+  return z.unknown().meta({
+    type: 'string',
+    description,
+    examples: ['4 A', '100 % of rated-current', '120 % of baseline', '1 %'],
+  });
 }
