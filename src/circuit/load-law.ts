@@ -15,7 +15,9 @@ export type LoadLaw =
       readonly leads: number;
     }
   /** Holds `voltage` at its own terminals and takes whatever current that needs. */
-  | { readonly kind: 'voltage'; readonly voltage: number; readonly leads: number };
+  | { readonly kind: 'voltage'; readonly voltage: number; readonly leads: number }
+  /** A plain resistor. */
+  | { readonly kind: 'resistance'; readonly resistance: number; readonly leads: number };
 
 /** A stretch of the law in which the current is a straight line in the module's voltage: a + b·V. */
 export interface LawPiece {
@@ -47,12 +49,45 @@ export function lawPieces(law: LoadLaw): readonly LawPiece[] {
           : { from: law.voltage, to: endless, atZero: endless, slope: 0 };
       return law.voltage > 0 ? [none, held] : [held];
     }
+    case 'resistance': {
+      const total = law.resistance + law.leads;
+      return [{ from: 0, to: endless, atZero: total > 0 ? 0 : endless, slope: total > 0 ? 1 / total : 0 }];
+    }
   }
 }
 
 /** The module's voltage below which a constant-current load no longer sinks its current. */
 export function saturationVoltage(law: Extract<LoadLaw, { kind: 'current' }>): number {
   return law.leastVoltage + law.current * law.leads;
+}
+
+/**
+ * The law the other way round, for what stands in series: to pass the current I the load needs the voltage
+ * atZero + slope·I, and however high the voltage it passes no more than `most`.
+ */
+export interface Need {
+  readonly atZero: number;
+  readonly slope: number;
+  readonly most: number;
+}
+
+/** The voltage that the load needs to pass a current. */
+export function needOf(law: LoadLaw): Need {
+  const endless = Number.POSITIVE_INFINITY;
+  switch (law.kind) {
+    case 'open':
+      return { atZero: 0, slope: 0, most: 0 };
+    case 'current':
+      return {
+        atZero: 0,
+        slope: law.current > 0 ? saturationVoltage(law) / law.current : 0,
+        most: law.current,
+      };
+    case 'voltage':
+      return { atZero: law.voltage, slope: law.leads, most: endless };
+    case 'resistance':
+      return { atZero: 0, slope: law.resistance + law.leads, most: endless };
+  }
 }
 
 /** The current the law draws when the module stands at this voltage. */

@@ -6,11 +6,19 @@ export interface ModuleCurve {
   readonly openCircuitVoltage: number;
   readonly droopResistance: number;
   readonly limit: CurveLimit;
+  /**
+   * What a higher voltage from outside drives back into the module, as ohms above its open-circuit
+   * voltage. Without it nothing flows back, as from a module with its own rectifier.
+   */
+  readonly reverseResistance?: number;
 }
 
 export type CurveLimit =
-  /** Straight down: the current holds, the voltage gives way. */
-  | { readonly style: 'constant-current'; readonly current: number }
+  /**
+   * Straight down: the current holds, the voltage gives way. With a `slope` (ohms, above 0) it gives way
+   * by slope·(I − current).
+   */
+  | { readonly style: 'constant-current'; readonly current: number; readonly slope?: number }
   /** A straight line from the knee back to `shortCircuit` at 0 V. */
   | { readonly style: 'foldback'; readonly current: number; readonly shortCircuit: number }
   /** The hyperbola V·I = P through the knee. */
@@ -50,7 +58,7 @@ export function piecesOf(curve: ModuleCurve): readonly CurvePiece[] {
 function beyond(limit: CurveLimit, turn: Corner): CurvePiece {
   switch (limit.style) {
     case 'constant-current':
-      return { kind: 'line', high: turn, low: { voltage: 0, current: turn.current } };
+      return { kind: 'line', high: turn, low: { voltage: 0, current: currentBeyond(limit, turn, 0) } };
     case 'foldback':
       return { kind: 'line', high: turn, low: { voltage: 0, current: limit.shortCircuit } };
     case 'constant-power':
@@ -63,6 +71,15 @@ function beyond(limit: CurveLimit, turn: Corner): CurvePiece {
   }
 }
 
+/** Current past a constant-current limit, where the module stands at this voltage below its knee. */
+function currentBeyond(
+  { slope }: Extract<CurveLimit, { style: 'constant-current' }>,
+  turn: Corner,
+  voltage: number,
+): number {
+  return slope === undefined ? turn.current : turn.current + (turn.voltage - voltage) / slope;
+}
+
 /** Current of one piece at a voltage within it. */
 export function currentOn(piece: CurvePiece, voltage: number): number {
   if (piece.kind === 'hyperbola') return piece.power / voltage;
@@ -73,10 +90,14 @@ export function currentOn(piece: CurvePiece, voltage: number): number {
 
 /**
  * The current the module delivers when something holds it at this voltage; the larger one where the curve
- * jumps, 0 from the open-circuit voltage upward.
+ * jumps, 0 from the open-circuit voltage upward or, with a reverse resistance, what flows back (negative).
  */
 export function currentAtVoltage(curve: ModuleCurve, voltage: number): number {
-  if (voltage >= curve.openCircuitVoltage) return 0;
+  if (voltage >= curve.openCircuitVoltage) {
+    const { reverseResistance } = curve;
+    const above = voltage - curve.openCircuitVoltage;
+    return reverseResistance === undefined || above === 0 ? 0 : -above / reverseResistance;
+  }
   const pieces = piecesOf(curve);
   const within = Math.max(0, voltage);
   const piece = pieces.findLast(({ high }) => high.voltage >= within);
@@ -90,7 +111,16 @@ export function currentAtVoltage(curve: ModuleCurve, voltage: number): number {
 export function voltageAtCurrent(curve: ModuleCurve, current: number): number {
   const turn = knee(curve);
   if (current <= turn.current) return curve.openCircuitVoltage - curve.droopResistance * Math.max(0, current);
-  return curve.limit.style === 'constant-power' ? (turn.voltage * turn.current) / current : 0;
+  switch (curve.limit.style) {
+    case 'constant-power':
+      return (turn.voltage * turn.current) / current;
+    case 'constant-current': {
+      const { slope } = curve.limit;
+      return slope === undefined ? 0 : Math.max(0, turn.voltage - slope * (current - turn.current));
+    }
+    case 'foldback':
+      return 0;
+  }
 }
 
 /**
@@ -103,7 +133,14 @@ export function currentAtSag(curve: ModuleCurve, sag: number): number {
   if (sagged >= turn.voltage && curve.droopResistance > 0) {
     return Math.min(turn.current, (curve.openCircuitVoltage - sagged) / curve.droopResistance);
   }
-  return curve.limit.style === 'constant-power' ? (turn.voltage * turn.current) / sagged : turn.current;
+  switch (curve.limit.style) {
+    case 'constant-power':
+      return (turn.voltage * turn.current) / sagged;
+    case 'constant-current':
+      return currentBeyond(curve.limit, turn, sagged);
+    case 'foldback':
+      return turn.current;
+  }
 }
 
 /** The same module with its limit (and what follows from it) multiplied, as warming does. */

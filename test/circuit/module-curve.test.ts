@@ -69,6 +69,28 @@ describe('a module curve', () => {
     expect(currentAtVoltage(soft, 0)).toBeCloseTo(1.5, 12);
   });
 
+  // From the knee at 14.5 V and 5 A the voltage falls by 2 V for each ampere: 7 V at 8.75 A.
+  it('with a sloping limit gives way ampere by ampere', () => {
+    const sloping: ModuleCurve = { ...line, limit: { style: 'constant-current', current: 5, slope: 2 } };
+    expect(currentAtVoltage(sloping, 7)).toBeCloseTo(8.75, 12);
+    expect(currentAtVoltage(sloping, 0)).toBeCloseTo(12.25, 12);
+    expect(voltageAtCurrent(sloping, 8.75)).toBeCloseTo(7, 12);
+    expect(voltageAtCurrent(sloping, 13)).toBe(0);
+    expect(currentAtSag(sloping, 0.05)).toBeCloseTo(5.125, 12);
+    expect(withLimitScaled(sloping, 0.9).limit).toEqual({
+      style: 'constant-current',
+      current: 4.5,
+      slope: 2,
+    });
+  });
+
+  it('takes current back through its reverse resistance only, if it has one', () => {
+    const sinking: ModuleCurve = { ...constantCurrent, reverseResistance: 0.5 };
+    expect(currentAtVoltage(sinking, 16)).toBe(-2);
+    expect(currentAtVoltage(sinking, 15)).toBe(0);
+    expect(currentAtVoltage(constantCurrent, 16)).toBe(0);
+  });
+
   it('keeps its shape when warming lowers the limit', () => {
     const warm = withLimitScaled(foldback, 0.9);
     expect(warm.limit).toEqual({ style: 'foldback', current: 4.5, shortCircuit: 0.9 });
