@@ -8,7 +8,7 @@ const ROUNDING = 8 * Number.EPSILON;
 /**
  * What all parts give together at one place less what is demanded there: the surplus, while one part after
  * the other turns to its next stretch. The straight ones are kept as one sum, so asking for the sign costs
- * the same for two parts as for twenty; only a zero that was found is worked out afresh from every part.
+ * the same for two of them as for twenty; only a zero that was found is worked out afresh from every part.
  */
 export class Balance {
   readonly #parts: Stretch[];
@@ -41,9 +41,10 @@ export class Balance {
   /** Do the parts give at least what is demanded? */
   isAbove(place: number): boolean {
     if (this.isEndless) return false;
-    const terms = [this.#atZero.value, this.#slope.value * place, -onStretch(this.demand, place).value];
-    let surplus = terms.reduce((sum, term) => sum + term, 0);
-    let size = terms.reduce((sum, term) => sum + Math.abs(term), 0);
+    const straight = this.#slope.value * place;
+    const demanded = onStretch(this.demand, place).value;
+    let surplus = this.#atZero.value + straight - demanded;
+    let size = Math.abs(this.#atZero.value) + Math.abs(straight) + Math.abs(demanded);
     for (const index of this.#bent) {
       const value = this.#valueOf(index, place);
       surplus += value;
