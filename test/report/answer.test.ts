@@ -3,6 +3,7 @@ import { measured, inWords } from '../../src/analysis/finding.js';
 import type { Finding } from '../../src/analysis/finding.js';
 import { promised } from '../../src/analysis/promised-errors.js';
 import { answer } from '../../src/report/answer.js';
+import { aBaseline, droopOf, relationOf } from '../judgement/a-baseline.js';
 import { resultOf } from './fixed-record.js';
 
 const amps = (name: string, value: number): Finding =>
@@ -47,5 +48,15 @@ describe('the answer', () => {
     expect(answerTo(recommended(3.9999), usable)[0]).toBe('Load it continuously with up to 3.99 A.');
     expect(answerTo(recommended(0), usable)[0]).toBe('Do not load it.');
     expect(answerTo(usable)).toEqual([]);
+  });
+
+  it('says what moved since the baseline, also where nothing is recommended', () => {
+    const result = resultOf();
+    const baseline = aBaseline();
+    const findings = [relationOf('isolated'), droopOf(0.036)];
+    expect(answer({ ...result, header: { ...result.header, baseline }, findings })).toEqual([
+      'Compared with 20261101T080000Z-K1-acceptance: droop-resistance moved from 18.00 mΩ to 36.00 mΩ, by +18.00 ± 0.28 mΩ (+100 %); allowed is 20 %.',
+      'earth-relation became isolated, as it must.',
+    ]);
   });
 });
