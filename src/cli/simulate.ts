@@ -25,8 +25,8 @@ export async function simulate(
   const stop = stopAsked();
   try {
     streams.stdout.write(withAddresses(file.text, served.addresses));
-    for (const [role, address] of Object.entries(served.addresses))
-      streams.stderr.write(`${role}: ${address}\n`);
+    for (const [post, address] of Object.entries(served.addresses))
+      streams.stderr.write(`${post}: ${address}\n`);
     streams.stderr.write('Serving until Ctrl-C.\n');
     await stop;
   } finally {

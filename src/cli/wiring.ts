@@ -101,6 +101,7 @@ export async function worldOf(bench: Bench, drivers: BenchDrivers): Promise<Worl
           simulation: bench.simulation,
           clock,
           drivers,
+          group: bench.group,
         });
   return { connect: connectors(clock, simulation), clock, simulation };
 }
@@ -114,8 +115,8 @@ export function connectors(clock: Clock, simulation?: OpenedSimulation): Connect
     ...(simulation === undefined
       ? {}
       : {
-          simulated: (address, driver, role) =>
-            Promise.resolve(simulation.connect(role, driver, address.dialect)),
+          simulated: (address, driver, post) =>
+            Promise.resolve(simulation.connect(post, driver, address.dialect)),
         }),
   });
 }

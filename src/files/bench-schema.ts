@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import type { Bench } from './bench.js';
+import { type Bench, placeOf, postsOf, roleOf } from './bench.js';
 import { choice, line, quantity } from './building-blocks.js';
 import { withoutHeader } from './camel-keys.js';
 import { headers } from './file-kind.js';
@@ -67,15 +67,15 @@ export const benchSchema: z.ZodType<Bench> = z
       complain(['leads'], 'missing; the leads must be known when the voltage is read at the load terminals');
     }
     for (const { path, message } of groupProblems(bench)) complain([...path], message);
-    for (const [role, instrument] of Object.entries(bench.instruments)) {
+    for (const [post, instrument] of postsOf(bench)) {
       if (instrument.connection.kind === 'simulated' && bench.simulation === undefined) {
         const message =
           "a simulated instrument needs a 'simulation' section, which says what is really there";
-        complain(['instruments', role, 'connection'], message);
+        complain([...placeOf(post), 'connection'], message);
       }
     }
     for (const role of Object.keys(bench.simulation?.instruments ?? {})) {
-      if (Object.hasOwn(bench.instruments, role)) continue;
+      if (postsOf(bench).some(([post]) => roleOf(post) === role)) continue;
       complain(
         ['simulation', 'instruments', role],
         `there is no ${role} among the instruments of this bench`,

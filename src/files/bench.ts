@@ -61,7 +61,10 @@ export interface BenchDrivers {
 export type Post = 'load' | 'meter' | 'scanner' | 'thermometer' | `meter-${number}`;
 
 /** Every instrument of a bench with its post, the load first. */
-export function postsOf({ instruments, group }: Bench): readonly (readonly [Post, InstrumentPlace])[] {
+export function postsOf({
+  instruments,
+  group,
+}: Pick<Bench, 'instruments' | 'group'>): readonly (readonly [Post, InstrumentPlace])[] {
   const { load, meter, scanner, thermometer } = instruments;
   const others = [
     ['meter', meter],
@@ -75,6 +78,10 @@ export function postsOf({ instruments, group }: Bench): readonly (readonly [Post
       place === undefined ? [] : [[post, place]],
     ),
   ];
+}
+
+export function isPost(text: string): text is Post {
+  return /^(?:load|scanner|thermometer|meter(?:-[1-9]\d?)?)$/.test(text);
 }
 
 /** The role that a driver must have for a post. */

@@ -54,6 +54,9 @@ const reading = z
       'value',
     ]).exactOptional(),
     'true-when': regularExpression('The answer is yes when the reply looks like this.').exactOptional(),
+    'false-when': regularExpression(
+      'What a no looks like, where it does not end in 0, OFF, FALSE or NO.',
+    ).exactOptional(),
     'channel-in': regularExpression(
       "Finds the number of the scanner's closed channel, in a group named value; none is closed where it finds none.",
       ['value'],
@@ -71,12 +74,16 @@ const reading = z
       );
     } else if (value.unit === undefined && value.pattern !== undefined) {
       complain(['pattern'], "only a reading with a 'unit' has a pattern");
+    } else if (value['true-when'] === undefined && value['false-when'] !== undefined) {
+      complain(['false-when'], "only a reading with 'true-when' can be false");
     }
   })
   .transform((value): DriverReading => {
     const { ask: asked, unit: dimension, pattern, 'true-when': trueWhen, 'channel-in': channelIn } = value;
+    const { 'false-when': falseWhen } = value;
     if (channelIn !== undefined) return { kind: 'channel', ask: asked, channelIn };
-    if (trueWhen !== undefined) return { kind: 'flag', ask: asked, trueWhen };
+    if (trueWhen !== undefined)
+      return { kind: 'flag', ask: asked, trueWhen, ...(falseWhen === undefined ? {} : { falseWhen }) };
     // The refinement above lets no reading through that has neither.
     if (dimension === undefined) return z.NEVER;
     return { kind: 'number', ask: asked, dimension, ...(pattern === undefined ? {} : { pattern }) };

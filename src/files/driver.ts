@@ -51,7 +51,13 @@ export type DriverReading =
       readonly dimension: Dimension;
       readonly pattern?: RegExp;
     }
-  | { readonly kind: 'flag'; readonly ask: readonly string[]; readonly trueWhen: RegExp }
+  | {
+      readonly kind: 'flag';
+      readonly ask: readonly string[];
+      readonly trueWhen: RegExp;
+      /** What a no looks like, where it is none of `0`, `OFF`, `FALSE` and `NO`. */
+      readonly falseWhen?: RegExp;
+    }
   /** `channelIn` finds the number in a group named `value`; a reply without one means that none is closed. */
   | { readonly kind: 'channel'; readonly ask: readonly string[]; readonly channelIn: RegExp };
 

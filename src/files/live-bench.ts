@@ -1,13 +1,14 @@
 import { parseDocument } from 'yaml';
+import { placeOf, type Post } from './bench.js';
 
 /**
- * The text of a bench file with the addresses of its instruments replaced, by role, and without the
+ * The text of a bench file with the addresses of its instruments replaced, by post, and without the
  * section that says what is simulated: what is served is real to whoever uses it.
  */
-export function withAddresses(text: string, addresses: Readonly<Record<string, string>>): string {
+export function withAddresses(text: string, addresses: Readonly<Partial<Record<Post, string>>>): string {
   const document = parseDocument(text);
-  for (const [role, address] of Object.entries(addresses)) {
-    document.setIn(['instruments', role, 'connection'], address);
+  for (const [post, address] of Object.entries(addresses) as [Post, string][]) {
+    document.setIn([...placeOf(post), 'connection'], address);
   }
   document.deleteIn(['simulation']);
   return document.toString();

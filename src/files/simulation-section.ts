@@ -64,22 +64,24 @@ export interface SimulatedError {
 }
 
 export type FaultName =
-  | `${'load' | 'meter' | 'scanner'}-${'silent' | 'lost'}`
+  | `${'load' | 'meter' | 'scanner' | 'thermometer'}-${'silent' | 'lost'}`
   | 'module-dead'
   /** The load's and the meter's leads, swapped at the module. */
   | 'reversed'
-  /** The channel that is closed stays closed, whatever the scanner is told and whatever it says. */
+  /** The channel that is closed, or the next one to be, stays closed whatever the scanner is told. */
   | 'scanner-stuck'
+  /** The same, and the scanner says that it has closed what it was told to close. */
+  | 'scanner-stuck-unnoticed'
   /** Someone has set the meter to resistance at its panel; it stays so until it is told otherwise. */
   | 'meter-wrong-mode'
   /** The probes across a place's ballast or output, swapped. */
   | 'probes-reversed'
-  /** One of the meter's own leads is broken: it reads nothing, and an open circuit in resistance. */
+  /** One of a meter's own leads is broken: it reads nothing, and an open circuit in resistance. */
   | 'lead-broken';
 
 export interface SimulatedFault {
   readonly at: Seconds;
   readonly what: FaultName;
-  /** The module it happens to; the first, or every one of them, when left out. */
+  /** The module it happens to, or whose own meter; the first, or every one of them, when left out. */
   readonly of?: string;
 }

@@ -52,7 +52,7 @@ export function readChannel(
 
 /**
  * Yes or no. Yes is what the driver says; no must be said as well (`0`, `OFF`, `FALSE` or `NO`, alone or at
- * the end): a reply that makes no sense must never stand for "the input is off".
+ * the end, or what the driver says): a reply that makes no sense must never stand for "the input is off".
  * @throws ReplyNotUnderstoodError
  */
 export function readFlag(
@@ -62,10 +62,12 @@ export function readFlag(
 ): boolean {
   const text = reply.length <= longest ? reply.trim() : '';
   if (text.search(reading.trueWhen) !== -1) return true;
-  if (no.test(text)) return false;
+  const { falseWhen = no } = reading;
+  if (text !== '' && text.search(falseWhen) !== -1) return false;
+  const expectedNo = falseWhen === no ? '0, OFF, FALSE or NO,' : `/${falseWhen.source}/`;
   throw new ReplyNotUnderstoodError({
     ...about,
     reply,
-    expected: `a reply that fits /${reading.trueWhen.source}/, or 0, OFF, FALSE or NO,`,
+    expected: `a reply that fits /${reading.trueWhen.source}/, or ${expectedNo}`,
   });
 }

@@ -33,9 +33,10 @@ export interface TrialResult {
 
 type Answer = Pick<TrialResult, 'received' | 'verdict' | 'detail'>;
 
-/** What a load is left with, whatever it was told on the way. */
+/** What an instrument is left with, whatever it was told on the way. */
 const leftWith: Readonly<Partial<Record<Driver['role'], readonly string[]>>> = {
   load: ['current-mode', 'set-current', 'make-safe'],
+  meter: ['measure-voltage', 'make-safe'],
 };
 
 /** Whether there was nothing to prove, or it is off beyond doubt. */

@@ -1,4 +1,5 @@
-import type { Accuracy, Driver, Role } from '../files/driver.js';
+import { type Post, roleOf } from '../files/bench.js';
+import type { Accuracy, Driver } from '../files/driver.js';
 import type { SimulatedError, Simulation } from '../files/simulation-section.js';
 import type { Random } from './random.js';
 
@@ -9,21 +10,21 @@ export const exact: SimulatedError = { gain: 0, offset: 0, resolution: 0 };
 const FLICKER_OF_LAST_DIGIT = 0.3;
 
 /**
- * The errors one instrument really has in one quantity: as the simulation says, else drawn within what the
- * driver promises, else none. What is set is drawn apart from what is read (`set-current`, `set-voltage`),
+ * The errors one instrument really has in one quantity: as the simulation says of it, or of its role, else
+ * drawn within what the driver promises, else none. What is set is drawn apart from what is read (`set-current`, `set-voltage`),
  * so that a read-back differs a little from its setting, as it does on a bench.
  */
 export function errorOf(
   simulation: Simulation,
-  role: Role,
+  post: Post,
   driver: Driver,
   quantity: string,
   random: Random,
 ): SimulatedError {
-  const told = simulation.instruments[role]?.errors[quantity];
+  const told = (simulation.instruments[post] ?? simulation.instruments[roleOf(post)])?.errors[quantity];
   if (told !== undefined) return told;
   const promised = driver.accuracy[quantity.replace(/^set-/, '')];
-  return promised === undefined ? exact : drawn(promised, random.fork(`${role} ${quantity}`));
+  return promised === undefined ? exact : drawn(promised, random.fork(`${post} ${quantity}`));
 }
 
 /** Evenly within the promised half-widths, the last digit's share of them set aside. */

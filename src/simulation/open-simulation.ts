@@ -1,11 +1,12 @@
 import type { Clock } from '../clock/clock.js';
-import type { BenchDrivers } from '../files/bench.js';
+import { type BenchDrivers, type Group, isPost, type Post, roleOf } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
 import type { Simulation } from '../files/simulation-section.js';
 import type { Connection } from '../instrument/connection.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { dialectFor } from './dialects/choose-dialect.js';
 import { errorOf } from './instrument-errors.js';
+import { Probes } from './probes.js';
 import { randomFrom, type Random } from './random.js';
 import { SimulatedConnection } from './simulated-connection.js';
 import { CannotSimulateError } from './simulation-errors.js';
@@ -24,47 +25,54 @@ export interface OpenedSimulation {
    * A line to one instrument, which is made by the first line to it. `dialect` names a way of speaking.
    * @throws NotUnderstoodBySimulationError, UnknownDialectError, CannotSimulateError
    */
-  connect(role: string, driver: Driver, dialect?: string): Connection;
+  connect(post: string, driver: Driver, dialect?: string): Connection;
   /** The instrument itself, to be served on another line. */
-  instrument(role: string, driver: Driver, dialect?: string): VirtualInstrument;
+  instrument(post: string, driver: Driver, dialect?: string): VirtualInstrument;
 }
 
 /**
- * Sets up a simulated bench: the module, the leads and the load, and instruments that are reached by bytes only.
- * Everything random comes from the simulation's seed.
+ * Sets up a simulated bench: the modules, the leads and the load, and instruments that are reached by bytes
+ * only. `group` says which channel of a scanner is wired to which place. Everything random comes from the
+ * simulation's seed.
  * @throws CannotSimulateError
  */
 export function openSimulation(facts: {
   readonly simulation: Simulation;
   readonly clock: Clock;
   readonly drivers: BenchDrivers;
+  readonly group?: Group | undefined;
 }): OpenedSimulation {
-  const { simulation, clock, drivers } = facts;
+  const { simulation, clock, drivers, group } = facts;
   const random = randomFrom(simulation.seed);
   const began = clock.now();
   const world = worldOf(simulation, drivers.load, random);
-  const instruments = new Map<string, VirtualInstrument>();
-  const instrument = (role: string, driver: Driver, dialectName?: string): VirtualInstrument => {
-    if (role !== 'load' && role !== 'meter') {
-      throw new CannotSimulateError({
-        what: `a ${role}`,
-        advice: 'Only a load and a meter can be simulated.',
-      });
-    }
-    const known = instruments.get(role);
+  const probes = new Probes({ simulation, group, scanned: drivers.scanner !== undefined });
+  const instruments = new Map<Post, VirtualInstrument>();
+  const instrument = (post: string, driver: Driver, dialectName?: string): VirtualInstrument => {
+    if (!isPost(post) || driver.role !== roleOf(post)) throw cannotBe(post, driver);
+    const known = instruments.get(post);
     if (known !== undefined) return known;
     const dialect = dialectFor(driver, dialectName);
-    const made = new VirtualInstrument({ bench: world, simulation, driver, dialect, random });
-    instruments.set(role, made);
+    const made = new VirtualInstrument({
+      post,
+      bench: world,
+      probes,
+      simulation,
+      group,
+      driver,
+      dialect,
+      random,
+    });
+    instruments.set(post, made);
     return made;
   };
   return {
     world,
     began,
-    operator: simulatedOperator({ bench: world, clock, began }, simulation.answers),
+    operator: simulatedOperator({ bench: world, probes, clock, began }, simulation.answers),
     instrument,
-    connect: (role, driver, dialectName) => {
-      const reached = instrument(role, driver, dialectName);
+    connect: (post, driver, dialectName) => {
+      const reached = instrument(post, driver, dialectName);
       return new SimulatedConnection({
         address: `simulated:${reached.dialect}`,
         instrument: reached,
@@ -73,6 +81,14 @@ export function openSimulation(facts: {
       });
     },
   };
+}
+
+function cannotBe(post: string, { name, role }: Driver): CannotSimulateError {
+  return new CannotSimulateError({
+    what: `the driver ${name}, for a ${role}, at the post "${post}"`,
+    advice:
+      'There are a load, a meter, a scanner, a thermometer, and own meters of the places: meter-1, meter-2.',
+  });
 }
 
 function worldOf(simulation: Simulation, load: Driver, random: Random): VirtualBench {

@@ -2,19 +2,23 @@ import { mkdtemp, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import type { Clock } from '../clock/clock.js';
-import type { Bench, BenchDrivers } from '../files/bench.js';
-import type { Driver } from '../files/driver.js';
+import {
+  type Bench,
+  type BenchDrivers,
+  driverAt,
+  type InstrumentPlace,
+  type Post,
+  postsOf,
+} from '../files/bench.js';
 import { openSimulation } from './open-simulation.js';
 import { serveOnPty } from './serve-pty.js';
 import { LOOPBACK, serveOnTcp } from './serve-tcp.js';
 import { CannotSimulateError } from './simulation-errors.js';
 import type { VirtualBench } from './virtual-bench.js';
 
-export type ServedRole = 'load' | 'meter';
-
 export interface ServedBench {
-  /** As a bench file writes them: `tcp://127.0.0.1:5025`, `serial:<link>?baud=115200`. */
-  readonly addresses: Readonly<Partial<Record<ServedRole, string>>>;
+  /** By post, as a bench file writes them: `tcp://127.0.0.1:5025`, `serial:<link>?baud=115200`. */
+  readonly addresses: Readonly<Partial<Record<Post, string>>>;
   readonly world: VirtualBench;
   close(): Promise<void>;
 }
@@ -26,8 +30,8 @@ export interface ServeOptions {
   readonly clock: Clock;
   /** `pty` needs socat. TCP when left out. */
   readonly lines?: 'tcp' | 'pty';
-  /** TCP ports by role; any free one when left out. */
-  readonly ports?: Readonly<Partial<Record<ServedRole, number>>>;
+  /** TCP ports by post; any free one when left out. */
+  readonly ports?: Readonly<Partial<Record<Post, number>>>;
 }
 
 /**
@@ -45,27 +49,28 @@ export async function serveBench(options: ServeOptions): Promise<ServedBench> {
       advice: 'Add one that says what is really there; fixtures/benches has examples.',
     });
   }
-  const opened = openSimulation({ simulation, clock, drivers });
-  const addresses: Partial<Record<ServedRole, string>> = {};
+  const opened = openSimulation({ simulation, clock, drivers, group: bench.group });
+  const addresses: Partial<Record<Post, string>> = {};
   const closings: (() => Promise<void>)[] = [];
   const close = async (): Promise<void> => {
     for (let one = closings.pop(); one !== undefined; one = closings.pop()) await one();
   };
   try {
     const folder = options.lines === 'pty' ? await temporaryFolder(closings) : undefined;
-    for (const [role, driver] of Object.entries(drivers) as [ServedRole, Driver | undefined][]) {
+    for (const [post, place] of postsOf(bench)) {
+      const driver = driverAt(drivers, post);
       if (driver === undefined) continue;
-      const instrument = opened.instrument(role, driver, dialectIn(bench, role));
-      const served = await serveOnTcp({ instrument, clock, began: opened.began, port: ports[role] ?? 0 });
+      const instrument = opened.instrument(post, driver, dialectIn(place));
+      const served = await serveOnTcp({ instrument, clock, began: opened.began, port: ports[post] ?? 0 });
       closings.push(() => served.close());
       if (folder === undefined) {
-        addresses[role] = `tcp://${LOOPBACK}:${served.port}`;
+        addresses[post] = `tcp://${LOOPBACK}:${served.port}`;
         continue;
       }
-      const link = join(folder, role);
+      const link = join(folder, post);
       const line = await serveOnPty({ port: served.port, link, clock });
       closings.push(() => line.close());
-      addresses[role] = `serial:${link}?baud=115200`;
+      addresses[post] = `serial:${link}?baud=115200`;
     }
   } catch (error) {
     await close();
@@ -80,7 +85,6 @@ async function temporaryFolder(closings: (() => Promise<void>)[]): Promise<strin
   return folder;
 }
 
-function dialectIn(bench: Bench, role: ServedRole): string | undefined {
-  const connection = bench.instruments[role]?.connection;
-  return connection?.kind === 'simulated' ? connection.dialect : undefined;
+function dialectIn({ connection }: InstrumentPlace): string | undefined {
+  return connection.kind === 'simulated' ? connection.dialect : undefined;
 }

@@ -1,27 +1,33 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { parseDriver } from '../../src/files/read-driver.js';
-import { readNumber } from '../../src/instrument/reading.js';
+import { readChannel, readFlag, readNumber } from '../../src/instrument/reading.js';
+import { ReplyNotUnderstoodError } from '../../src/instrument/reply-errors.js';
 
 const folder = new URL('../../drivers/', import.meta.url);
 const files = readdirSync(folder).filter((name) => name.endsWith('.yaml'));
 const shipped = (name: string) => parseDriver(readFileSync(new URL(name, folder), 'utf8'), `drivers/${name}`);
 
+const about = { address: 'serial:', question: '?' };
+
 describe('the shipped drivers', () => {
-  it('are the four families', () => {
+  it('are the six families', () => {
     expect(files.sort()).toEqual([
       'load-input-scpi.yaml',
       'load-short-scpi.yaml',
       'meter-query-scpi.yaml',
       'meter-read-scpi.yaml',
+      'scanner-route-scpi.yaml',
+      'thermometer-query-scpi.yaml',
     ]);
   });
 
   it.each(files)('%s can be read, and is named as its file is', (file) => {
     const driver = shipped(file);
     expect(`${driver.name}.yaml`).toBe(file);
-    expect(driver.operations['make-safe']).not.toBeUndefined();
-    expect(driver.accuracy['voltage']?.fixed).toBeGreaterThan(0);
+    for (const [name, { kind }] of Object.entries(driver.readings)) {
+      if (kind === 'number') expect(driver.accuracy[name]?.fixed).toBeGreaterThan(0);
+    }
   });
 
   it.each([
@@ -30,8 +36,51 @@ describe('the shipped drivers', () => {
     ['current', '3.998A', 3.998],
   ])('take the short style with its units: %s %s', (name, reply, value) => {
     const reading = shipped('load-short-scpi.yaml').readings[name];
-    const about = { address: 'serial:', question: '?' };
     expect(reading?.kind === 'number' && readNumber(reply, reading, about)).toEqual({ kind: 'value', value });
+  });
+
+  it.each([
+    ['"VOLT +1.0E+01,+1.0E-05"', true, false],
+    ['"VOLT:DC 10,0.001"', true, false],
+    ['VOLT', true, false],
+    ['"VOLT:AC 10,0.001"', false, false],
+    ['"CURR +1.0E+00,+1.0E-06"', false, false],
+    ['"RES +1.0E+03,+1.0E-03"', false, true],
+    ['"FRES +1.0E+03,+1.0E-03"', false, false],
+  ])(
+    'tell from CONF? whether a meter measures dc voltage or resistance: %s',
+    (reply, voltage, resistance) => {
+      const { readings } = shipped('meter-read-scpi.yaml');
+      const says = (name: string): boolean | undefined => {
+        const reading = readings[name];
+        return reading?.kind === 'flag' ? readFlag(reply, reading, about) : undefined;
+      };
+      expect(says('measures-voltage')).toBe(voltage);
+      expect(says('measures-resistance')).toBe(resistance);
+    },
+  );
+
+  it.each(['', '10', '-113', '"'])('do not take "%s" for what a meter measures', (reply) => {
+    const reading = shipped('meter-read-scpi.yaml').readings['measures-voltage'];
+    expect(() => reading?.kind === 'flag' && readFlag(reply, reading, about)).toThrow(
+      ReplyNotUnderstoodError,
+    );
+  });
+
+  it.each([
+    ['(@101)', 101],
+    ['(@ 3 )', 3],
+    ['(@)', null],
+  ])('find the closed channel in %s', (reply, channel) => {
+    const reading = shipped('scanner-route-scpi.yaml').readings['closed-channel'];
+    expect(reading?.kind === 'channel' ? readChannel(reply, reading, about) : 0).toBe(channel);
+  });
+
+  it.each(['(@101,102)', '(@101:104)', '(@1!2)'])('do not take %s for a channel', (reply) => {
+    const reading = shipped('scanner-route-scpi.yaml').readings['closed-channel'];
+    expect(() => reading?.kind === 'channel' && readChannel(reply, reading, about)).toThrow(
+      ReplyNotUnderstoodError,
+    );
   });
 
   it('are all named in the guide that stands beside them', () => {

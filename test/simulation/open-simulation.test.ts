@@ -189,8 +189,13 @@ describe('what cannot be simulated', () => {
     );
   });
 
-  it('is refused by name: an instrument of another role', () => {
+  it.each([
+    ['source', { ...meterDriver, role: 'source' }],
+    ['scanner', meterDriver],
+    ['meter-0', meterDriver],
+  ] as const)('is refused by name: at the post "%s" something that has no place there', (post, driver) => {
     const opened = openSimulation({ simulation: simulationOf(k1(hiccup)), clock, drivers });
-    expect(() => opened.connect('scanner', { ...meterDriver, role: 'scanner' })).toThrow(CannotSimulateError);
+    expect(() => opened.connect(post, driver)).toThrow(CannotSimulateError);
+    expect(() => opened.connect(post, driver)).toThrow(`at the post "${post}"`);
   });
 });

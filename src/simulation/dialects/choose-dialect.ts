@@ -4,11 +4,20 @@ import { loadAtRest } from '../virtual-load.js';
 import { configuredMeter } from './configured-meter.js';
 import type { Dialect, Interpreter } from './dialect.js';
 import { queryMeter } from './query-meter.js';
+import { queryThermometer } from './query-thermometer.js';
+import { routedScanner } from './routed-scanner.js';
 import { shortLoad } from './short-load.js';
 import { standardLoad } from './standard-load.js';
 
 /** Every way of speaking there is; to add one is one file and its place here. */
-export const dialects: readonly Dialect[] = [standardLoad, shortLoad, configuredMeter, queryMeter];
+export const dialects: readonly Dialect[] = [
+  standardLoad,
+  shortLoad,
+  configuredMeter,
+  queryMeter,
+  routedScanner,
+  queryThermometer,
+];
 
 /**
  * The first dialect of the driver's role that understands every message of the driver, or the one that is
@@ -74,12 +83,19 @@ function firstUnknown(dialect: Dialect, messages: readonly DriverMessage[]): num
 /** Hands that reach nothing, to hear how a dialect takes a message. */
 function wakeForTrial(dialect: Dialect): Interpreter {
   const nothing = { identity: 'trial', measure: () => 0 };
-  return dialect.role === 'meter'
-    ? dialect.wake(nothing)
-    : dialect.wake({
+  switch (dialect.role) {
+    case 'load':
+      return dialect.wake({
         ...nothing,
         most: { current: 1000, voltage: 1000 },
         state: () => loadAtRest,
         set: () => undefined,
       });
+    case 'meter':
+      return dialect.wake({ ...nothing, mode: () => 'voltage', setMode: () => undefined });
+    case 'scanner':
+      return dialect.wake({ ...nothing, closed: () => [], close: () => undefined, open: () => undefined });
+    case 'thermometer':
+      return dialect.wake(nothing);
+  }
 }

@@ -3,27 +3,32 @@ import { configuration, question } from './scpi-commands.js';
 import { ScpiInterpreter } from './scpi-interpreter.js';
 import { nr3 } from './scpi-number.js';
 
+/** As it names its function, range and resolution; the last two are automatic and say nothing here. */
+const configured = {
+  voltage: '"VOLT +1.000000E+02,+1.000000E-03"',
+  resistance: '"RES +1.000000E+02,+1.000000E-03"',
+};
+
 /** A meter that is configured once, with CONFigure, and then read as often as wanted, with READ?. */
 export const configuredMeter: Dialect = {
   name: 'configured-meter',
   role: 'meter',
   replyEnd: '\n',
-  wake: (hands) => {
-    let configured: 'voltage' | 'resistance' = 'voltage';
-    return new ScpiInterpreter({
+  wake: (hands) =>
+    new ScpiInterpreter({
       identity: hands.identity,
       reset: () => {
-        configured = 'voltage';
+        hands.setMode('voltage');
       },
       commands: [
         configuration('CONFigure[:SCALar]:VOLTage[:DC]', () => {
-          configured = 'voltage';
+          hands.setMode('voltage');
         }),
         configuration('CONFigure[:SCALar]:RESistance', () => {
-          configured = 'resistance';
+          hands.setMode('resistance');
         }),
-        question('READ', () => nr3(hands.measure(configured))),
+        question('CONFigure', () => configured[hands.mode()]),
+        question('READ', () => nr3(hands.measure(hands.mode()))),
       ],
-    });
-  },
+    }),
 };

@@ -1,4 +1,4 @@
-import type { Amperes, Volts } from '../../quantity/quantity.js';
+import type { Amperes, Celsius, Volts } from '../../quantity/quantity.js';
 import type { LoadState } from '../virtual-load.js';
 
 /** What a way of speaking can do with the instrument it speaks for. */
@@ -11,10 +11,28 @@ export interface LoadHands {
   measure(what: 'voltage' | 'current' | 'power'): number;
 }
 
+export type MeterMode = 'voltage' | 'resistance';
+
 export interface MeterHands {
   readonly identity: string;
+  /** What it is set to, by whatever it was told or by someone at its panel. */
+  mode(): MeterMode;
+  setMode(mode: MeterMode): void;
   /** Volts, or ohms; infinite is beyond every range. */
-  measure(what: 'voltage' | 'resistance'): number;
+  measure(what: MeterMode): number;
+}
+
+export interface ScannerHands {
+  readonly identity: string;
+  /** As it believes them to be, in rising order. */
+  closed(): readonly number[];
+  close(channels: readonly number[]): void;
+  open(channels: readonly number[] | 'all'): void;
+}
+
+export interface ThermometerHands {
+  readonly identity: string;
+  measure(): Celsius;
 }
 
 /** A way of speaking, for one role. It knows the wire's text and nothing of drivers. */
@@ -30,6 +48,18 @@ export type Dialect =
       readonly role: 'meter';
       readonly replyEnd: string;
       wake(hands: MeterHands): Interpreter;
+    }
+  | {
+      readonly name: string;
+      readonly role: 'scanner';
+      readonly replyEnd: string;
+      wake(hands: ScannerHands): Interpreter;
+    }
+  | {
+      readonly name: string;
+      readonly role: 'thermometer';
+      readonly replyEnd: string;
+      wake(hands: ThermometerHands): Interpreter;
     };
 
 export interface Interpreter {

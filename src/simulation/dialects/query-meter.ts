@@ -3,7 +3,7 @@ import { question } from './scpi-commands.js';
 import { ScpiInterpreter } from './scpi-interpreter.js';
 import { nr3 } from './scpi-number.js';
 
-/** A meter that configures itself and measures by one query: MEASure:VOLTage?. */
+/** A meter that configures itself and measures by one query, MEASure:VOLTage?, however it was set before. */
 export const queryMeter: Dialect = {
   name: 'query-meter',
   role: 'meter',

@@ -1,12 +1,17 @@
 import { describe, expect, it } from 'vitest';
 import { configuredMeter } from '../../../src/simulation/dialects/configured-meter.js';
-import type { Dialect, Interpreter } from '../../../src/simulation/dialects/dialect.js';
+import type { Dialect, Interpreter, MeterMode } from '../../../src/simulation/dialects/dialect.js';
 import { queryMeter } from '../../../src/simulation/dialects/query-meter.js';
 
 function awake(dialect: Dialect): Interpreter {
   if (dialect.role !== 'meter') throw new Error('not a meter');
+  let mode: MeterMode = 'voltage';
   return dialect.wake({
     identity: 'railproof,simulated meter,K-bench,1',
+    mode: () => mode,
+    setMode: (wanted) => {
+      mode = wanted;
+    },
     measure: (what) => (what === 'voltage' ? 15.21 : Number.POSITIVE_INFINITY),
   });
 }
@@ -20,6 +25,13 @@ describe('a meter that is configured once', () => {
     expect(meter.hear('READ?').reply).toBe('+1.521000E+01');
   });
 
+  it('says what it is set to, so that a wrong mode is noticed', () => {
+    const meter = awake(configuredMeter);
+    expect(meter.hear('CONF?').reply).toMatch(/^"VOLT [^"]+"$/);
+    expect(meter.hear('CONF:RES;:CONF?').reply).toMatch(/^"RES [^"]+"$/);
+    expect(meter.hear('*RST;CONF?').reply).toMatch(/^"VOLT /);
+  });
+
   it('does not know how to measure by one query', () => {
     const meter = awake(configuredMeter);
     expect(meter.hear('MEAS:VOLT?').understood).toBe(false);
@@ -30,6 +42,12 @@ describe('a meter that is configured once', () => {
 describe('a meter asked by one query', () => {
   it.each(['MEAS:VOLT?', 'MEASURE:VOLTAGE:DC?', 'meas:volt:dc? 20, 0.001'])('answers %s', (message) => {
     expect(awake(queryMeter).hear(message)).toEqual({ reply: '+1.521000E+01', understood: true });
+  });
+
+  it('measures resistance by another, and is never in the wrong mode', () => {
+    const meter = awake(queryMeter);
+    expect(meter.hear('MEAS:RES?').reply).toBe('+9.9E+37');
+    expect(meter.hear('MEAS:VOLT?').reply).toBe('+1.521000E+01');
   });
 
   it('has no READ?', () => {
