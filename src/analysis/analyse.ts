@@ -3,6 +3,7 @@ import { coldPoints, heldPoints, stepsOf } from './curve.js';
 import { dropoutBracket, dropoutFindings } from './dropout.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, findingNamed } from './finding.js';
+import { isolationFindings } from './isolation.js';
 import { leadFindings } from './lead-resistance.js';
 import { limitStyleFindings } from './limit-style.js';
 import { findKnee, onsetFindings } from './onset.js';
@@ -52,6 +53,7 @@ export function analyse(evidence: Evidence): readonly Finding[] {
     ...style,
     ...recoveryFindings(evidence),
     ...leadFindings(evidence),
+    ...isolationFindings(evidence),
     ...answerFindings(evidence),
   ];
 }

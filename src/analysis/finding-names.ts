@@ -20,6 +20,8 @@ export const findingNames = {
   'thermal-drift': 'voltage-rate',
   'earth-resistance': 'resistance',
   'earth-relation': 'word',
+  'earth-resistance-of-*': 'resistance',
+  'earth-relation-of-*': 'word',
   imbalance: 'ratio',
   'hogging-module': 'word',
   'share-of-*': 'ratio',

@@ -1,3 +1,4 @@
+import { earthPoint } from '../circuit/earth-point.js';
 import type { Module } from '../files/module.js';
 import type { OperatorRequest } from './operator.js';
 
@@ -38,28 +39,17 @@ export const leadsApart: Handwork = {
   act: 'leads apart',
 };
 
-/** Where the earth of a module is touched: its plug is out, and it is the plug that is touched. */
-export function earthOf({ protectionClass, input }: Pick<Module, 'protectionClass' | 'input'>): string {
-  if (protectionClass === 'I') return input === 'mains' ? 'the earth pin of its plug' : 'its earth terminal';
-  return input === 'mains'
-    ? 'both pins of its plug and the bare metal of its case, joined'
-    : 'both of its input terminals and the bare metal of its case, joined';
-}
-
+/** The plug is out, and it is the plug that is touched: nothing is ever measured on live mains. */
 export function probeEarth(module: Module, alone: boolean): Handwork {
   const { name, protectionClass, input } = module;
   const out =
     input === 'mains' ? `The plug of ${name} is out of the socket` : `The input of ${name} is off its source`;
-  const hold = "hold one of the meter's tips on";
-  const other = 'and the other on the 0 V of its output, until the next question';
-  const text =
-    protectionClass === 'I'
-      ? `${out} and stays out: ${hold} ${earthOf(module)} ${other}.`
-      : `${out} and stays out. ${name} has no earth (protection class II): join ${joined(input)} with clip leads, ` +
-        `${hold} those ${other}.`;
+  const joined = protectionClass === 'I' ? '' : ' Join them with clip leads, as it has no earth of its own.';
   return {
     name: `probe-earth-${name}`,
-    text,
+    text:
+      `${out} and stays out. Hold one of the meter's tips on ${earthPoint(module)}, ` +
+      `and the other on the 0 V of its output, until the next question.${joined}`,
     act: alone ? 'probe earth and 0 V' : `probe earth and 0 V of ${name}`,
   };
 }
@@ -94,8 +84,4 @@ function inputsOut(modules: Modules): string {
   return modules.length === 1
     ? `Take the input leads of ${names} off their source`
     : `Pull the plugs, or take off the input leads, of ${names}`;
-}
-
-function joined(input: Module['input']): string {
-  return `${input === 'mains' ? 'both pins of its plug' : 'both of its input terminals'} and any bare metal of its case`;
 }
