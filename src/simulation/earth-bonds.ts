@@ -34,3 +34,11 @@ export function shortedSpans(
   const bonds = bondedPlaces(modules);
   return bonds.slice(1).map((to, index) => [bonds[index] ?? 0, to]);
 }
+
+/** The places of all modules that earth bonds short. */
+export function shortedPlaces(modules: readonly SimulatedModule[]): ReadonlySet<number> {
+  const spans = shortedSpans(modules);
+  return new Set(
+    [...modules.keys()].filter((place) => spans.some(([from, to]) => place >= from && place < to)),
+  );
+}

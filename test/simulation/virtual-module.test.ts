@@ -4,33 +4,45 @@ import { type LoadLaw, currentDrawn } from '../../src/circuit/load-law.js';
 import { currentAtVoltage } from '../../src/circuit/module-curve.js';
 import type { ModuleLimit, SimulatedModule } from '../../src/files/simulation-section.js';
 import { curveOf } from '../../src/simulation/module-curve-of.js';
-import {
-  type ModuleState,
-  advance,
-  freshModule,
-  onNewLoad,
-  outputOf,
-  powered,
-  unpowered,
-} from '../../src/simulation/virtual-module.js';
+import { type CircuitState, freshCircuit } from '../../src/simulation/circuit-state.js';
+import type { SimulatedCircuit } from '../../src/simulation/resting-point.js';
+import { advance, onNewLoad, outputOf, powered, unpowered } from '../../src/simulation/virtual-circuit.js';
+import type { ModuleState } from '../../src/simulation/virtual-module.js';
 import { hiccup, k1 } from './bench-parts.js';
 
 const sinks = (current: number): LoadLaw => ({ kind: 'current', current, leastVoltage: 1, leads: 0.035 });
 const open: LoadLaw = { kind: 'open' };
 const thermal = { riseAtRated: 35, timeConstant: 720, ambient: 23, limitPerKelvin: -0.002 };
 
+/** A module by itself: a circuit of one. */
+const alone = (module: SimulatedModule): SimulatedCircuit => ({ circuit: 'single', modules: [module] });
+const only = new Set([0]);
+
 /** Plays loads that follow one another, each for a while, and gives the state and its output after each. */
 function play(
   module: SimulatedModule,
   acts: readonly (readonly [LoadLaw, number])[],
-): { state: ModuleState; voltage: number; current: number }[] {
-  let state = freshModule(0);
+): { circuit: CircuitState; state: ModuleState; voltage: number; current: number }[] {
+  const circuit = alone(module);
+  let state = freshCircuit([module], 0);
   let law = open;
   return acts.map(([next, duration]) => {
-    state = advance(module, onNewLoad(module, state, law, next), next, state.at + duration);
+    state = advance(circuit, onNewLoad(circuit, state, law, next), next, state.at + duration);
     law = next;
-    return { state, ...outputOf(module, state, law) };
+    const { voltage, current } = outputOf(circuit, state, law);
+    return { circuit: state, state: moduleOf(state), voltage, current };
   });
+}
+
+function moduleOf({ modules: [module] }: CircuitState): ModuleState {
+  if (module === undefined) throw new Error('no module');
+  return module;
+}
+
+/** The same with its input cycled. */
+function cycled(module: SimulatedModule, state: CircuitState, law: LoadLaw): CircuitState {
+  const circuit = alone(module);
+  return powered(circuit, unpowered(circuit, state, law, only), law, only);
 }
 
 describe('a constant-current module', () => {
@@ -69,9 +81,9 @@ describe('a folding-back module on a constant-current load', () => {
   });
 
   it('does not start on a load above its short-circuit current', () => {
-    const state = powered(module, unpowered(freshModule(0)), sinks(3));
-    expect(state.phase.kind).toBe('limiting');
-    expect(powered(module, unpowered(freshModule(0)), sinks(1)).phase.kind).toBe('held');
+    const fresh = freshCircuit([module], 0);
+    expect(moduleOf(cycled(module, fresh, sinks(3))).phase.kind).toBe('limiting');
+    expect(moduleOf(cycled(module, fresh, sinks(1))).phase.kind).toBe('held');
   });
 });
 
@@ -116,11 +128,9 @@ describe('a latching module', () => {
       [open, 3600],
     ]);
     expect(off?.voltage).toBe(0);
-    const cycled = powered(module, unpowered((off as { state: ModuleState }).state), open);
-    expect(outputOf(module, advance(module, cycled, open, cycled.at + 0.1), open).voltage).toBeCloseTo(
-      15.21,
-      6,
-    );
+    const again = cycled(module, off?.circuit ?? freshCircuit([], 0), open);
+    const later = advance(alone(module), again, open, again.at + 0.1);
+    expect(outputOf(alone(module), later, open).voltage).toBeCloseTo(15.21, 6);
   });
 });
 
@@ -204,13 +214,21 @@ describe('for any module in any state', () => {
       fc.property(limits, acts, (limit, played) => {
         const module = k1(limit, { thermal, ratedCurrent: 4 });
         const results = play(module, played);
-        for (const [index, { state, voltage, current }] of results.entries()) {
+        for (const [
+          index,
+          {
+            circuit: { at },
+            state,
+            voltage,
+            current,
+          },
+        ] of results.entries()) {
           const law = played[index]?.[0] ?? open;
           expect(current).toBeGreaterThanOrEqual(0);
           expect(voltage).toBeGreaterThanOrEqual(0);
           if (voltage === 0 && current === 0) continue;
           // Still coming up: the load's law holds, and the module has charge to give.
-          if (state.phase.kind === 'held' && state.at - state.phase.since < 0.1) continue;
+          if (state.phase.kind === 'held' && at - state.phase.since < 0.1) continue;
           expect(Math.abs(currentDrawn(law, voltage) - current)).toBeLessThan(1e-6);
           const trying = state.phase.kind === 'retrying' && limit.style === 'constant-power';
           if (!trying)

@@ -1,0 +1,147 @@
+import type { LoadLaw } from '../circuit/load-law.js';
+import type { Ratio, Volts } from '../quantity/quantity.js';
+import type { CircuitState } from './circuit-state.js';
+import { curveOf } from './module-curve-of.js';
+import { type Part, type SimulatedCircuit, restingPoint } from './resting-point.js';
+import { attemptBegins, attempting } from './retry.js';
+import { type Standing, standingOf } from './standing.js';
+import { type ModulePhase, delivers, overloaded, periodOf, staysAtItsLimit } from './virtual-module.js';
+
+/** Which of the modules that keep trying may start now, by their places. */
+export type Tries = (circuit: SimulatedCircuit, state: CircuitState) => ReadonlySet<number>;
+
+/** Once its load has eased, a module that retries starts whenever it tries. */
+export const whileTrying: Tries = (circuit, state) =>
+  retrying(circuit, state, (since, period) => attempting(since, period, state.at));
+
+/**
+ * Having merely cooled by a hair, only with a new attempt: else it would start and trip without end within
+ * one. One that is just trying starts with another's new attempt, which may be what it lacked.
+ */
+export const withNewAttempts: Tries = (circuit, state) => {
+  const beginning = retrying(circuit, state, (since, period) => attemptBegins(since, period, state.at));
+  return beginning.size === 0 ? beginning : whileTrying(circuit, state);
+};
+
+/** As if all tried at once: what could be. */
+export const atAnyTime: Tries = (circuit, state) => retrying(circuit, state, () => true);
+
+function retrying(
+  { modules }: SimulatedCircuit,
+  state: CircuitState,
+  may: (since: number, period: number) => boolean,
+): ReadonlySet<number> {
+  return placesOf(state, ({ phase }, place) => {
+    const module = modules[place];
+    return module !== undefined && phase.kind === 'retrying' && may(phase.since, periodOf(module));
+  });
+}
+
+/**
+ * Applies at once what follows from the present load and temperatures: who is pushed past its limit, whom
+ * that pushes past theirs, who can come back. `from` are the voltages that the modules had.
+ */
+export function settle(
+  circuit: SimulatedCircuit,
+  state: CircuitState,
+  law: LoadLaw,
+  from: readonly Volts[],
+  tries: Tries,
+): CircuitState {
+  const rises = state.modules.map(({ rise }) => rise);
+  const feeding = placesOf(state, ({ phase }, place) => {
+    const module = circuit.modules[place];
+    if (module === undefined) return false;
+    return phase.kind === 'held' || (phase.kind === 'limiting' && staysAtItsLimit(module));
+  });
+  let standing = standingOf(circuit, rises, feeding, law);
+  const trying = tries(circuit, state);
+  if (trying.size > 0) {
+    const withThem = standingOf(circuit, rises, union(standing.members, trying), law);
+    if ([...trying].some((place) => withThem.delivering.has(place))) standing = withThem;
+  }
+  const back = comingBack(circuit, state, standing, law);
+  if (back.size > 0) standing = standingOf(circuit, rises, union(standing.members, back), law);
+  return {
+    at: state.at,
+    modules: state.modules.map((module, place) => ({
+      rise: module.rise,
+      phase: phaseIn(circuit, state, standing, place, from) ?? module.phase,
+    })),
+  };
+}
+
+/** Undefined for one whose phase stays as it is. */
+function phaseIn(
+  { modules }: SimulatedCircuit,
+  state: CircuitState,
+  { delivering }: Standing,
+  place: number,
+  from: readonly Volts[],
+): ModulePhase | undefined {
+  const module = modules[place];
+  const isHeld = state.modules[place]?.phase.kind === 'held';
+  if (module === undefined || isHeld === delivering.has(place)) return undefined;
+  return isHeld ? overloaded(module, state.at) : { kind: 'held', since: state.at, from: from[place] ?? 0 };
+}
+
+/**
+ * Beside others that hold the bus a module that has folded back, and has since cooled by a hair, would come
+ * back and go again without end; it needs this much room below its limit.
+ */
+const ROOM_TO_COME_BACK: Ratio = 0.02;
+
+/**
+ * Of the modules that rest collapsed, those that come up again. Coming from below, even the lowest point at
+ * which they could rest must be one at which they deliver.
+ */
+function comingBack(
+  circuit: SimulatedCircuit,
+  state: CircuitState,
+  standing: Standing,
+  law: LoadLaw,
+): ReadonlySet<number> {
+  const rises = state.modules.map(({ rise }) => rise);
+  let candidates = placesOf(state, ({ phase }, place) => {
+    const module = circuit.modules[place];
+    return module !== undefined && phase.kind === 'limiting' && !staysAtItsLimit(module);
+  });
+  while (candidates.size > 0) {
+    const { members } = standingOf(circuit, rises, union(standing.members, candidates), law);
+    const left = [...candidates].filter((place) => members.has(place));
+    const parts = circuit.modules.map((module, place): Part => {
+      if (!members.has(place)) return { kind: 'nothing' };
+      const from = standing.delivering.has(place) ? 'above' : 'below';
+      return { kind: 'curve', curve: curveOf(module, rises[place] ?? 0), from };
+    });
+    const point = restingPoint(circuit, parts, law);
+    const able = left.filter((place) => {
+      const module = circuit.modules[place];
+      const found = point.modules[place];
+      const rise = rises[place] ?? 0;
+      if (module === undefined || found === undefined || !delivers(module, rise, found.voltage)) return false;
+      const isBesideOthers = circuit.circuit === 'parallel' && standing.delivering.size > 0;
+      if (!isBesideOthers || module.limit.style !== 'foldback') return true;
+      return found.current <= (1 - ROOM_TO_COME_BACK) * curveOf(module, rise).limit.current;
+    });
+    if (able.length === candidates.size) break;
+    candidates = new Set(able);
+  }
+  return candidates;
+}
+
+function placesOf(
+  { modules }: CircuitState,
+  fits: (module: CircuitState['modules'][number], place: number) => boolean,
+): ReadonlySet<number> {
+  return new Set(
+    [...modules.keys()].filter((place) => {
+      const module = modules[place];
+      return module !== undefined && fits(module, place);
+    }),
+  );
+}
+
+function union(some: ReadonlySet<number>, others: ReadonlySet<number>): ReadonlySet<number> {
+  return new Set([...some, ...others]);
+}
