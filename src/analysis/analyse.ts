@@ -6,13 +6,17 @@ import { type Finding, findingNamed } from './finding.js';
 import { isolationFindings } from './isolation.js';
 import { leadFindings } from './lead-resistance.js';
 import { limitStyleFindings } from './limit-style.js';
+import { limitTraceOf } from './limit-trace.js';
 import { findKnee, onsetFindings } from './onset.js';
 import { openCircuitFindings } from './open-circuit.js';
 import { recommendedFindings } from './recommended-current.js';
 import { recoveryFindings } from './recovery.js';
 import { regulationFindings } from './regulation.js';
+import { shortCircuitFindings } from './short-circuit.js';
+import { soakedOf, soakFindings } from './soak.js';
 import { steadinessFindings } from './steadiness.js';
 import { usableCurrent } from './usable-current.js';
+import { warmDropout } from './warm-dropout.js';
 
 /**
  * Everything that a record's evidence shows, in the order in which a reader wants it. Pure: the same
@@ -36,22 +40,34 @@ export function analyse(evidence: Evidence): readonly Finding[] {
     held: steady,
     resistance: knee === undefined ? droop : -knee.right.slope,
   });
+  const openCircuit = numberNamed('open-circuit-voltage', [...idle, ...regulation]);
+  const trace = limitTraceOf(evidence, { openCircuit, droop });
   const style = limitStyleFindings(evidence, {
     dropout: numberNamed('dropout-current', dropout),
-    openCircuit: numberNamed('open-circuit-voltage', [...idle, ...regulation]),
+    openCircuit,
     droop,
+    trace,
   });
-  const usable = usableCurrent(evidence, { dropout: dropout[0], unsteady: unsteady[0], held });
+  const soaked = soakedOf(evidence);
+  const usable = usableCurrent(evidence, {
+    dropout: dropout[0],
+    unsteady: unsteady[0],
+    held,
+    soaked,
+    warm: warmDropout(evidence),
+  });
   return [
     ...(usable === undefined ? [] : [usable.finding]),
-    ...recommendedFindings(evidence, usable),
+    ...recommendedFindings(evidence, usable, soaked),
     ...idle,
     ...regulation,
     ...onsetFindings(evidence, cold, knee),
     ...unsteady,
     ...dropout,
     ...style,
+    ...shortCircuitFindings(evidence, trace),
     ...recoveryFindings(evidence),
+    ...soakFindings(evidence),
     ...leadFindings(evidence),
     ...isolationFindings(evidence),
     ...answerFindings(evidence),

@@ -3,10 +3,16 @@ import { mean } from '../statistics/checked.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence, StepEvidence } from './evidence.js';
 import { type Finding, inWords } from './finding.js';
+import type { LimitTrace } from './limit-trace.js';
+import type { Verdict } from './limit-verdict.js';
 
 /**
- * How a module limits, as far as a constant-current load can show it: from the samples of an overload
- * that was watched, and from whether the module came back when it was over. One rule a style:
+ * `limit-style`: what the overload that a search watched speaks for, and what a trace at constant voltage
+ * does (its rules stand with it). Where both speak they must agree; else it is `undetermined`, and the note
+ * names both.
+ *
+ * Of the overload on a constant-current load, from its samples and from whether the module came back when
+ * it was over; one rule a style:
  *
  * - latch-off: after the overload the voltage stayed away.
  * - hiccup: the samples change between a current of the limit's size and next to none; or there was no
@@ -24,10 +30,40 @@ export function limitStyleFindings(
     readonly dropout: Amperes | undefined;
     readonly openCircuit: Volts | undefined;
     readonly droop: Ohms | undefined;
+    readonly trace?: LimitTrace | undefined;
   },
 ): readonly Finding[] {
+  const verdict = together(overloadVerdict(evidence, found), found.trace);
+  return verdict === undefined
+    ? []
+    : [inWords('limit-style', verdict.style, { step: verdict.step, note: verdict.because })];
+}
+
+type Spoken = Verdict & { readonly step: number };
+
+function together(overload: Spoken | undefined, trace: Spoken | undefined): Spoken | undefined {
+  if (trace === undefined || overload === undefined) return trace ?? overload;
+  if (trace.style === 'undetermined') return overload;
+  if (overload.style === 'undetermined' || overload.style === trace.style) return trace;
+  return {
+    style: 'undetermined',
+    step: trace.step,
+    because:
+      `at constant voltage it looks like ${trace.style} (${trace.because}), ` +
+      `under overload like ${overload.style} (${overload.because})`,
+  };
+}
+
+function overloadVerdict(
+  evidence: Evidence,
+  found: {
+    readonly dropout: Amperes | undefined;
+    readonly openCircuit: Volts | undefined;
+    readonly droop: Ohms | undefined;
+  },
+): Spoken | undefined {
   const { dropout, openCircuit, droop = 0 } = found;
-  if (dropout === undefined || openCircuit === undefined) return [];
+  if (dropout === undefined || openCircuit === undefined) return undefined;
   for (const step of stepsOf(evidence, 'dropout-search')) {
     // One without an outcome was broken off: what ended it may be what its samples show.
     const watched = step.points
@@ -35,16 +71,9 @@ export function limitStyleFindings(
       .map(overloadOf);
     const overload = watched.find(({ samples }) => samples.length >= fewestSamples);
     if (overload === undefined) continue;
-    const { style, because } = styleOf(step, overload, { dropout, openCircuit, droop });
-    return [inWords('limit-style', style, { step: step.step, note: because })];
+    return { ...styleOf(step, overload, { dropout, openCircuit, droop }), step: step.step };
   }
-  return [];
-}
-
-interface Verdict {
-  readonly style:
-    'latch-off' | 'hiccup' | 'constant-power' | 'constant-current' | 'foldback' | 'undetermined';
-  readonly because: string;
+  return undefined;
 }
 
 interface Module {

@@ -15,8 +15,8 @@ export interface Usable {
 
 /**
  * `usable-current`: the largest current at which the module stays within the sag, is steady, and settles
- * within its limit of temperature where a soak settled beyond it. It is the lowest of the dropout, the edge
- * of steadiness and that thermal limit, lowest by what each can be relied on for: the lower ends of their
+ * within its limit of temperature where a soak settled beyond it. It is the lowest of the dropout, cold and
+ * (where a soak ended in one) warm, the edge of steadiness and that thermal limit, lowest by what each can be relied on for: the lower ends of their
  * intervals. Where none was reached it is the highest current that was held, and then it is a least value.
  */
 export function usableCurrent(
@@ -26,6 +26,8 @@ export function usableCurrent(
     readonly unsteady: Finding | undefined;
     readonly held: readonly CurvePoint[];
     readonly soaked?: Soaked | undefined;
+    /** What it holds when warm, where a soak ended in a dropout. */
+    readonly warm?: Finding | undefined;
   },
 ): Usable | undefined {
   const latch = afterOverload(evidence);
@@ -33,6 +35,7 @@ export function usableCurrent(
   const lowest = [
     { limit: found.unsteady, because: 'above that its output swings', setBy: 'limit' as const },
     { limit: found.dropout, because: 'above that it drops out', setBy: 'limit' as const },
+    { limit: found.warm, because: found.warm?.note ?? '', setBy: 'limit' as const },
     { limit: thermal, because: thermal?.note ?? '', setBy: 'temperature' as const },
   ]
     .flatMap(({ limit, ...rest }) => (limit === undefined ? [] : [{ limit, ...rest }]))

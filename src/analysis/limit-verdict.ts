@@ -1,0 +1,6 @@
+/** How a module limits, or that it can't be told, and what speaks for it. */
+export interface Verdict {
+  readonly style:
+    'latch-off' | 'hiccup' | 'constant-power' | 'constant-current' | 'foldback' | 'undetermined';
+  readonly because: string;
+}
