@@ -1,7 +1,5 @@
-import { nameplateOf } from '../circuit/nameplate.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes } from '../quantity/quantity.js';
-import type { RunHeader } from '../record/run-header.js';
 import { capacitorLifeFindings } from './capacitor-life.js';
 import type { Cap, Soaked } from './derating.js';
 import { ambientFactor, marginFactor } from './derating-factors.js';
@@ -10,6 +8,7 @@ import type { Factor, Finding } from './finding.js';
 import { nameplateFactor } from './nameplate-factor.js';
 import { gone } from './recovery.js';
 import { temperatureFactor } from './temperature-factor.js';
+import { ratedOf } from './rated.js';
 import type { Usable } from './usable-current.js';
 
 const because = {
@@ -30,8 +29,8 @@ export function recommendedFindings(
   soaked?: Soaked,
 ): readonly Finding[] {
   const { header } = evidence;
-  const rated = ratedCurrent(header);
-  if (usable === undefined || rated === undefined) return [];
+  const rated = ratedOf(header).current;
+  if (usable === undefined) return [];
   const { value, interval, step } = usable.finding;
   if (interval === null || typeof value !== 'number') return [];
   const low = Math.max(0, interval[0]);
@@ -91,9 +90,3 @@ const failure: Cap = {
   current: 0,
   sets: 'its failure sets it',
 };
-
-/** Of what is connected. */
-function ratedCurrent({ circuit, modules }: RunHeader): Amperes | undefined {
-  const [first, ...others] = modules.map(({ rated }) => rated);
-  return first === undefined ? undefined : nameplateOf(circuit, [first, ...others]).current;
-}

@@ -6,6 +6,7 @@ import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
 import { lineOverCurrent } from './sound-line.js';
 import { moduleVoltageErrors, promised, promisedErrors } from './promised-errors.js';
+import { ratedOf } from './rated.js';
 
 /** The line may be stretched by this part beyond its last point to reach the rated current. */
 const stretch = 1.05;
@@ -89,8 +90,8 @@ function interceptFinding(evidence: Evidence, fit: LineFit, step: number | null)
 
 /** IEC 61204: the fall of the voltage from no load to rated current, over the rated voltage. */
 function regulationFinding(evidence: Evidence, droop: Finding, reaches: Amperes): readonly Finding[] {
-  const rated = evidence.header.modules[0]?.rated;
-  if (rated === undefined || reaches < rated.current) return [];
+  const rated = ratedOf(evidence.header);
+  if (reaches < rated.current) return [];
   const perOhm = rated.current / rated.voltage;
   return [
     measured(

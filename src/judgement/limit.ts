@@ -1,5 +1,6 @@
 import { type Finding, findingNamed } from '../analysis/finding.js';
 import { dimensionOfFinding } from '../analysis/finding-names.js';
+import { ratedOf } from '../analysis/rated.js';
 import { formatQuantity, formatShare } from '../quantity/format-quantity.js';
 import {
   baseline,
@@ -49,9 +50,9 @@ export function limitOf(
   return shareOf(findingNamed(findings, written.of), written, 'what it refers to was not measured');
 }
 
-function nameplate({ modules }: RunHeader): Partial<Record<ReferenceName, number | undefined>> {
-  const rated = modules[0]?.rated;
-  return { 'rated-voltage': rated?.voltage, 'rated-current': rated?.current };
+function nameplate(header: RunHeader): Partial<Record<ReferenceName, number>> {
+  const { voltage, current } = ratedOf(header);
+  return { 'rated-voltage': voltage, 'rated-current': current };
 }
 
 function shareOf(
