@@ -1,5 +1,7 @@
-import type { Bench } from '../files/bench.js';
+import type { Clock } from '../clock/clock.js';
+import type { Group, Post } from '../files/bench.js';
 import type { Instrument } from '../instrument/instrument.js';
+import { checkMeasuresVoltage } from './meter-mode.js';
 import type { Tap, Taken } from './sample.js';
 import { ScannerStuckError } from './wrong-place-error.js';
 
@@ -8,25 +10,27 @@ import { ScannerStuckError } from './wrong-place-error.js';
  * put elsewhere and a person may move, and those that each place of a group may have of its own.
  */
 export class MeterPlaces {
-  readonly #bench: Bench;
+  readonly #group: Group | undefined;
+  readonly #clock: Clock;
   readonly #meter: Instrument | undefined;
   readonly #scanner: Instrument | undefined;
-  readonly #own: readonly Instrument[];
+  readonly #ownOf: (place: number) => Instrument | undefined;
   /** Where a person has put the probes; undefined is their usual place. */
   #moved: string | undefined;
 
-  constructor(
-    bench: Bench,
-    instruments: {
-      readonly meter: Instrument | undefined;
-      readonly scanner: Instrument | undefined;
-      readonly own: readonly Instrument[];
-    },
-  ) {
-    this.#bench = bench;
-    this.#meter = instruments.meter;
-    this.#scanner = instruments.scanner;
-    this.#own = instruments.own;
+  constructor(facts: {
+    readonly group: Group | undefined;
+    readonly clock: Clock;
+    readonly meter: Instrument | undefined;
+    readonly scanner: Instrument | undefined;
+    /** The own meter of a place, from 1. */
+    readonly ownOf: (place: number) => Instrument | undefined;
+  }) {
+    this.#group = facts.group;
+    this.#clock = facts.clock;
+    this.#meter = facts.meter;
+    this.#scanner = facts.scanner;
+    this.#ownOf = facts.ownOf;
   }
 
   /** The operator has moved the probes; undefined is back to their usual place. */
@@ -38,7 +42,10 @@ export class MeterPlaces {
     return this.#moved;
   }
 
-  /** Reads the voltage at the usual place, where the probes are there, and at each tap that is within reach. */
+  /**
+   * Reads the voltage at the usual place, where the probes are there, and at each tap that is within reach.
+   * @throws ScannerStuckError; WrongPlaceError when a meter without a value says that it measures something else
+   */
   async read(taps: readonly Tap[], take: (taken: Taken) => void): Promise<void> {
     if (this.#moved !== undefined) {
       await this.#readMeter(this.#moved, take);
@@ -49,7 +56,7 @@ export class MeterPlaces {
       for (const tap of taps) await this.#readOwn(tap, take);
       return;
     }
-    const { outputChannel } = this.#bench.group ?? {};
+    const outputChannel = this.#group?.outputChannel;
     if (outputChannel !== undefined) {
       await this.#close(outputChannel);
       await this.#readMeter(undefined, take);
@@ -66,15 +73,12 @@ export class MeterPlaces {
   }
 
   async #readMeter(at: string | undefined, take: (taken: Taken) => void): Promise<void> {
-    if (this.#meter === undefined) return;
-    const measurement = await this.#meter.read('voltage');
-    take({ of: 'meter', what: 'voltage', ...(at === undefined ? {} : { at }), measurement });
+    if (this.#meter !== undefined) await read(this.#meter, 'meter', at, take);
   }
 
   async #readOwn({ place, at }: Tap, take: (taken: Taken) => void): Promise<void> {
-    const meter = this.#own[place - 1];
-    if (meter === undefined) return;
-    take({ of: `meter-${place}`, what: 'voltage', at, measurement: await meter.read('voltage') });
+    const meter = this.#ownOf(place);
+    if (meter !== undefined) await read(meter, `meter-${place}`, at, take);
   }
 
   /** @throws ScannerStuckError when it says that another channel is closed. */
@@ -82,14 +86,28 @@ export class MeterPlaces {
     const scanner = this.#scanner;
     if (scanner === undefined) return;
     await scanner.perform('close-channel', { channel });
-    if (!scanner.reads('closed-channel')) return;
-    const closed = await scanner.channel('closed-channel');
-    if (closed !== channel) throw new ScannerStuckError(scanner.address, channel, closed);
+    if (scanner.reads('closed-channel')) {
+      const closed = await scanner.channel('closed-channel');
+      if (closed !== channel) throw new ScannerStuckError(scanner.address, channel, closed);
+    }
+    // The relay bounces, and what the meter measures has changed as much as on any step of the load.
+    await this.#clock.sleep(Math.max(scanner.driver.settling, this.#meter?.driver.settling ?? 0));
   }
 
   #channelOf({ place }: Tap): number {
-    const channel = this.#bench.group?.places[place - 1]?.channel;
+    const channel = this.#group?.places[place - 1]?.channel;
     if (channel === undefined) throw new Error(`place ${place} has no channel`);
     return channel;
   }
+}
+
+async function read(
+  meter: Instrument,
+  of: Post,
+  at: string | undefined,
+  take: (taken: Taken) => void,
+): Promise<void> {
+  const measurement = await meter.read('voltage');
+  take({ of, what: 'voltage', ...(at === undefined ? {} : { at }), measurement });
+  if (measurement.kind !== 'value') await checkMeasuresVoltage(meter);
 }

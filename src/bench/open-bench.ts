@@ -89,8 +89,13 @@ function assemble(
   const meter = at('meter');
   const scanner = at('scanner');
   const thermometer = at('thermometer');
-  const own = others.filter(({ post }) => post.startsWith('meter-')).map(({ instrument }) => instrument);
-  const places = new MeterPlaces(parts.bench, { meter, scanner, own });
+  const places = new MeterPlaces({
+    group: parts.bench.group,
+    clock: parts.clock,
+    meter,
+    scanner,
+    ownOf: (place) => at(`meter-${place}`),
+  });
   const instruments = (): readonly BenchInstrument[] => [
     { post: 'load', instrument: load.instrument },
     ...others,

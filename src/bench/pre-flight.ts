@@ -1,8 +1,11 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import { PreFlightError } from './bench-error.js';
+import { valueOf } from './guards.js';
+import { checkMeasuresVoltage } from './meter-mode.js';
 import { moduleVoltage } from './module-voltage.js';
 import type { OpenBench } from './open-bench.js';
+import type { Taken } from './sample.js';
 
 /** @throws PreFlightError when the load's input is on before the run has begun. */
 export async function checkInputIsOff(bench: OpenBench): Promise<void> {
@@ -13,6 +16,16 @@ export async function checkInputIsOff(bench: OpenBench): Promise<void> {
   );
 }
 
+/**
+ * Asks every meter that can be asked whether it measures dc voltage.
+ * @throws WrongPlaceError naming the one that does not.
+ */
+export async function checkMeters({ instruments }: Pick<OpenBench, 'instruments'>): Promise<void> {
+  for (const { instrument } of instruments) {
+    if (instrument.role === 'meter') await checkMeasuresVoltage(instrument);
+  }
+}
+
 /** Part of the rated voltage by which the open-circuit voltage may differ before it is another module. */
 const tolerance = 0.25;
 /** Below this part of the rated voltage there is nothing there. */
@@ -21,7 +34,8 @@ const nothing = 0.05;
 /**
  * Reads the open-circuit voltage with the input off, and hands it over when it is one that this module may
  * have.
- * @throws PreFlightError when it has the wrong sign or a size that this module can't have.
+ * @throws PreFlightError when it has the wrong sign or a size that this module can't have, or when the meter
+ * at the module and the load do not read the same.
  */
 export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): Promise<Volts> {
   const taken = await bench.sample(() => undefined);
@@ -32,6 +46,7 @@ export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): P
       `check the range and the leads of the ${bench.description.voltageFrom === 'meter-at-module' ? 'meter' : 'load'}`,
     );
   }
+  checkAgreement(bench, taken, rated);
   const read = formatQuantity(volts, 'voltage', { significant: 4 });
   if (volts < -rated * nothing) {
     throw new PreFlightError(
@@ -52,4 +67,32 @@ export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): P
     );
   }
   return volts;
+}
+
+/** Part of the rated voltage by which meter and load may differ beyond what both promise. */
+const disagreement = 0.02;
+
+/**
+ * With the input off nothing is lost in the leads, so the meter at the module and the load read the same; a
+ * meter that does not is at another place, or measures something else, whatever it says.
+ */
+function checkAgreement(bench: OpenBench, taken: readonly Taken[], rated: Volts): void {
+  if (bench.description.voltageFrom !== 'meter-at-module') return;
+  const metered = valueOf(taken, 'meter', 'voltage');
+  const atLoad = valueOf(taken, 'load', 'voltage');
+  const allowed =
+    promised(bench.meter, metered) + promised(bench.load.instrument, atLoad) + disagreement * rated;
+  if (!(Math.abs(metered - atLoad) > allowed)) return;
+  const read = (volts: Volts): string => formatQuantity(volts, 'voltage', { significant: 4 });
+  throw new PreFlightError(
+    `with the input off the meter reads ${read(metered)} and the load ${read(atLoad)}`,
+    "are the meter's probes at the output of what the load is on, the right way round, is it set to dc voltage, " +
+      'and are the leads of both in place?',
+  );
+}
+
+/** Half-width of what the instrument's maker promises; none where the driver does not say. */
+function promised(instrument: OpenBench['meter'], volts: Volts): Volts {
+  const { ofReading = 0, fixed = 0 } = instrument?.driver.accuracy['voltage'] ?? {};
+  return ofReading * Math.abs(volts) + fixed;
 }

@@ -67,7 +67,8 @@ export function planDrivers(files: DriverFiles): BenchDrivers {
   const at = (post: Post): Driver | undefined => files.find((one) => one.post === post)?.file.value;
   const load = at('load');
   if (load === undefined) throw new Error('a bench has a load');
-  const places = files.filter(({ post }) => post.startsWith('meter-')).map(({ file }) => file.value);
+  const highest = Math.max(0, ...files.map(({ post }) => Number(/^meter-(\d+)$/.exec(post)?.[1] ?? 0)));
+  const places = Array.from({ length: highest }, (_, index) => at(`meter-${index + 1}`));
   return {
     load,
     meter: at('meter'),

@@ -48,13 +48,13 @@ export interface GroupPlace {
   readonly meter?: InstrumentPlace;
 }
 
-/** The driver of each instrument of a bench; `places` are those of the places' own meters, in their order. */
+/** The driver of each instrument of a bench; `places` are those of the places' own meters, a place each. */
 export interface BenchDrivers {
   readonly load: Driver;
   readonly meter?: Driver | undefined;
   readonly scanner?: Driver | undefined;
   readonly thermometer?: Driver | undefined;
-  readonly places?: readonly Driver[] | undefined;
+  readonly places?: readonly (Driver | undefined)[] | undefined;
 }
 
 /** The part that an instrument has on a bench: `meter-2` is the own meter of the second place. */

@@ -1,7 +1,7 @@
 import { GuardTrippedError } from '../bench/bench-error.js';
 import { makeSafe, type Safety } from '../bench/make-safe.js';
 import type { OpenBench } from '../bench/open-bench.js';
-import { checkInputIsOff, checkOpenCircuitVoltage } from '../bench/pre-flight.js';
+import { checkInputIsOff, checkMeters, checkOpenCircuitVoltage } from '../bench/pre-flight.js';
 import type { Clock } from '../clock/clock.js';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
@@ -98,6 +98,7 @@ function noteTrip({ journal }: Performance, trip: GuardTrippedError): void {
 
 async function begin({ plan, bench, journal, operator, signal }: Performance): Promise<void> {
   await checkInputIsOff(bench);
+  await checkMeters(bench);
   const { wiring } = plan.procedure;
   if (wiring.length > 0) {
     const acknowledged = await operator.acknowledge('wiring', wiring.join('\n'), signal);

@@ -85,6 +85,7 @@ function stubborn(clock: VirtualClock, reading: string | ((count: number) => str
   const answers: Readonly<Record<string, string>> = {
     '*IDN?': 'NURSERY,METER,K,1',
     'SYST:ERR?': '0,"No error"',
+    'CONF?': '"VOLT 100,0.001"',
   };
   return new VirtualLine(clock, (message, at) => {
     const read = (): string => (typeof reading === 'string' ? reading : reading((count += 1)));
