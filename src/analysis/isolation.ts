@@ -49,14 +49,14 @@ function findingsOf(
 const reasons: Readonly<
   Record<EarthRelation, (interval: readonly [Ohms, Ohms], limits: EarthLimits) => string>
 > = {
-  bonded: (_interval, { bondedBelow }) => `below ${ohms(bondedBelow)}`,
+  bonded: (_interval, { bondedBelow }) => `below ${asSet(bondedBelow)}`,
   isolated: (_interval, { isolatedAbove }) =>
-    `above ${ohms(isolatedAbove)}; what voltage it withstands, only an insulation test shows`,
+    `above ${asSet(isolatedAbove)}; what voltage it withstands, only an insulation test shows`,
   leaky: () => 'neither bonded nor isolated: something conducts',
   undetermined: ([low, high], { bondedBelow, isolatedAbove }) =>
     high < -bondedBelow
       ? 'it reads below zero: a voltage is in the way'
-      : `between ${ohms(low)} and ${ohms(high)}, on both sides of ${ohms(low <= bondedBelow ? bondedBelow : isolatedAbove)}`,
+      : `between ${ohms(low)} and ${ohms(high)}, on both sides of ${asSet(low <= bondedBelow ? bondedBelow : isolatedAbove)}`,
 };
 
 function resistanceFindings(
@@ -119,4 +119,9 @@ function limitsIn({ settings }: StepEvidence): EarthLimits | undefined {
 
 function ohms(value: Ohms): string {
   return formatQuantity(value, 'resistance', { significant: 3 });
+}
+
+/** A threshold, as it was written. */
+function asSet(value: Ohms): string {
+  return formatQuantity(value, 'resistance');
 }

@@ -43,13 +43,13 @@ function flawIn(
   { together, apart }: LeadsProof,
   limits: LeadLimits,
 ): string | undefined {
-  if (together === undefined || apart === undefined)
-    return `the leads were not proved ${when} the measurement`;
-  const held = leadsTogether(together, limits);
+  const held = together === undefined ? 'sound' : leadsTogether(together, limits);
   if (held !== 'sound')
     return `held together ${when} the measurement, the leads read ${held === 'unread' ? 'nothing' : 'open'}`;
-  const parted = leadsApart(apart, limits);
+  const parted = apart === undefined ? 'sound' : leadsApart(apart, limits);
   if (parted !== 'sound')
     return `held apart ${when} the measurement, the leads read ${parted === 'unread' ? 'nothing' : 'a resistance'}`;
-  return undefined;
+  return together === undefined || apart === undefined
+    ? `the leads were not proved ${when} the measurement`
+    : undefined;
 }
