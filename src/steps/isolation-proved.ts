@@ -34,7 +34,7 @@ function reasonOf(earth: EarthRelation | undefined): string {
     case 'bonded':
       return 'its output is tied to earth, which in a stack would short the modules below it';
     case 'leaky':
-      return 'its output is not isolated from earth: a current would flow through it that nothing limits';
+      return 'its output leaks to earth, and in a stack the voltage of the modules below would drive a current through that leak';
     case 'undetermined':
     case 'isolated':
       return 'it could not be told how its output stands to earth';
