@@ -12,8 +12,10 @@ import { openCircuitFindings } from './open-circuit.js';
 import { recommendedFindings } from './recommended-current.js';
 import { recoveryFindings } from './recovery.js';
 import { regulationFindings } from './regulation.js';
+import { sharingFindings } from './sharing.js';
 import { shortCircuitFindings } from './short-circuit.js';
 import { soakedOf, soakFindings } from './soak.js';
+import { stackFindings } from './stack.js';
 import { steadinessFindings } from './steadiness.js';
 import { usableCurrent } from './usable-current.js';
 import { warmDropout } from './warm-dropout.js';
@@ -59,6 +61,8 @@ export function analyse(evidence: Evidence): readonly Finding[] {
   return [
     ...(usable === undefined ? [] : [usable.finding]),
     ...recommendedFindings(evidence, usable, soaked),
+    ...sharingFindings(evidence, { dropout: dropout[0], held }),
+    ...stackFindings(evidence, { dropout: dropout[0], held, openCircuit: idle[0] }),
     ...idle,
     ...regulation,
     ...onsetFindings(evidence, cold, knee),

@@ -21,10 +21,12 @@ export interface DropoutBracket {
 
 /**
  * The bracket of the whole record: below the lowest set-point that any step saw dropped, the highest that
- * was held; undefined when everything asked for was held. A search goes before a ramp where both speak.
+ * was held; undefined when everything asked for was held. A search goes before a climb where both speak.
  */
 export function dropoutBracket(evidence: Evidence): DropoutBracket | undefined {
-  const steps = ['dropout-search', 'load-ramp'].flatMap((kind) => stepsOf(evidence, kind));
+  const steps = ['dropout-search', 'load-ramp', 'sharing-log', 'stack-check'].flatMap((kind) =>
+    stepsOf(evidence, kind),
+  );
   const dropped = steps
     .flatMap(droppedPoints)
     .sort((one, other) => one.set - other.set)

@@ -41,6 +41,8 @@ export interface PointEvidence {
   /** Undefined when the record was cut off in the middle of it. */
   readonly outcome: PointOutcome | undefined;
   readonly moduleVoltage: RunningMoments;
+  /** Which instrument `moduleVoltage` was read by: the load where the meter's probes were elsewhere. */
+  readonly voltageBy: 'meter' | 'load';
   readonly loadVoltage: RunningMoments;
   readonly current: RunningMoments;
   /** Of what was read elsewhere than at the usual place, by where: `ballast-of-K1`. */
@@ -168,6 +170,7 @@ export class EvidenceCollector {
     if (of !== 'load' || what !== 'current') return;
     const voltage = this.#moduleVoltage(number);
     addIfValue(point.moduleVoltage, voltage);
+    point.voltageBy = this.#isMetered() ? 'meter' : 'load';
     addIfValue(point.loadVoltage, this.#loadVoltage);
     addIfValue(point.current, number);
     if ((point.phase === 'overload' || point.phase === 'trace') && point.samples.length < mostSamples) {
@@ -182,10 +185,14 @@ export class EvidenceCollector {
   }
 
   #moduleVoltage(current: Amperes): Volts {
-    const { voltageFrom, leads } = this.#header.bench;
-    return voltageFrom === 'meter-at-module' && this.#meterVoltage !== undefined
+    const { leads } = this.#header.bench;
+    return this.#meterVoltage !== undefined && this.#isMetered()
       ? this.#meterVoltage
       : this.#loadVoltage + current * leads.resistance;
+  }
+
+  #isMetered(): boolean {
+    return this.#header.bench.voltageFrom === 'meter-at-module' && this.#meterVoltage !== undefined;
   }
 }
 
@@ -209,6 +216,7 @@ function newPoint({ point, phase, set, of }: PointBegan, t: Seconds): Growing<Po
     t,
     outcome: undefined,
     moduleVoltage: new RunningMoments(),
+    voltageBy: 'meter',
     loadVoltage: new RunningMoments(),
     current: new RunningMoments(),
     taps: new Map(),

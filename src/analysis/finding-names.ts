@@ -25,6 +25,7 @@ export const findingNames = {
   imbalance: 'ratio',
   'hogging-module': 'word',
   'share-of-*': 'ratio',
+  'ballast-of-*': 'resistance',
   'recommended-ballast': 'resistance',
   'group-current': 'current',
   'stack-voltage': 'voltage',

@@ -4,11 +4,18 @@ import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes } from '../quantity/quantity.js';
 import { changesInWords } from './changes.js';
 import { inOneLine } from './finding-text.js';
+import { groupAnswer } from './group-answer.js';
 import { endedHow, type Result } from './result.js';
 
 /** What the technician came for, in a few sentences, the first of which is what to do. Empty when nothing was found. */
 export function answer(result: Result): readonly string[] {
-  return [...advice(result), ...sinceBaseline(result)];
+  const single = result.header.circuit === 'single';
+  const [first, ...reasons] = advice(result);
+  return [
+    ...(first === undefined ? [] : [first]),
+    ...(single ? reasons : groupAnswer(result)),
+    ...sinceBaseline(result),
+  ];
 }
 
 /** How hard it may be worked, and why. */
@@ -17,7 +24,9 @@ function advice(result: Result): readonly string[] {
   const usable = findingNamed(result.findings, 'usable-current');
   if (recommended === undefined || usable === undefined) return [];
   const current = Number(recommended.value);
-  const what = current > 0 ? `load it continuously with up to ${roundedDown(current)}` : 'do not load it';
+  const it = { single: 'it', parallel: 'the group', series: 'the string' }[result.header.circuit];
+  const what =
+    current > 0 ? `load ${it} continuously with up to ${roundedDown(current)}` : `do not load ${it}`;
   const sentence = endedHow(result).how === 'completed' ? what : `as far as the run went, ${what}`;
   return [
     `${sentence.charAt(0).toUpperCase()}${sentence.slice(1)}.`,

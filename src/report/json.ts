@@ -14,7 +14,8 @@ export function resultAsJson(result: Result): object {
   return {
     format: resultFormat,
     run: result.run,
-    module: result.header.modules[0]?.name ?? null,
+    module: result.header.modules.map(({ name }) => name).join('+'),
+    ...circuitAsJson(result),
     procedure: result.header.procedure.name,
     ...baselineAsJson(result),
     ended: how === 'failed' ? 'stopped' : how,
@@ -31,6 +32,11 @@ export function resultAsJson(result: Result): object {
       note,
     })),
   };
+}
+
+/** Only where there are several modules. */
+function circuitAsJson({ header: { circuit, modules } }: Result): object {
+  return circuit === 'single' ? {} : { circuit, modules: modules.map(({ name }) => name) };
 }
 
 /** Only where there was one. */

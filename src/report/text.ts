@@ -1,4 +1,5 @@
 import { findingNamed } from '../analysis/finding.js';
+import { ratedOf } from '../analysis/rated.js';
 import type { Decision } from '../judgement/judge.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import { alignTable } from './align.js';
@@ -35,19 +36,35 @@ function withPrintableTexts({ evidence, header, ...rest }: Result): Result {
 }
 
 function heading({ header, run }: Result, style: Style): string {
-  const module = header.modules[0];
-  const plate =
-    module === undefined
-      ? ''
-      : `${formatQuantity(module.rated.voltage, 'voltage')}, ${formatQuantity(module.rated.current, 'current')}`;
-  const description = module?.description ?? '';
   const began = header.began.replace('T', ' ').replace(/:\d\d(\.\d+)?Z$/, ' UTC');
+  const names = header.modules.map(({ name }) => name).join('+');
   return [
-    style.strong(`${module?.name ?? '?'}: ${header.procedure.title}`),
-    [description, `nameplate ${plate}`].filter((part) => part !== '').join(' · '),
+    style.strong(`${names}: ${header.procedure.title}`),
+    ...circuitInWords(header),
+    ...header.modules.map((module) => plate(module, header.circuit === 'single')),
     `${header.procedure.name} on ${header.bench.name}${header.bench.simulated ? ' (simulated)' : ''}, ${began}, record ${run}`,
     ...againstWhat(header),
   ].join('\n');
+}
+
+/** Of several modules: how they are wired, and what their labels amount to together. */
+function circuitInWords(header: Result['header']): readonly string[] {
+  const { circuit, modules } = header;
+  if (circuit === 'single') return [];
+  const whole = platesInWords(ratedOf(header));
+  const wired = circuit === 'parallel' ? 'in parallel' : 'in series, the lowest first';
+  return [`${modules.length} modules ${wired} · together ${whole}`];
+}
+
+function plate({ name, description, rated }: Result['header']['modules'][number], isAlone: boolean): string {
+  const parts = [description, `nameplate ${platesInWords(rated)}`].filter((part) => part !== '');
+  return `${isAlone ? '' : `${name}: `}${parts.join(' · ')}`;
+}
+
+function platesInWords({ voltage, current }: { readonly voltage: number; readonly current: number }): string {
+  // Sums of labels without the digits that adding makes.
+  const said = (value: number): number => Number(value.toPrecision(6));
+  return `${formatQuantity(said(voltage), 'voltage')}, ${formatQuantity(said(current), 'current')}`;
 }
 
 function againstWhat({ baseline }: Result['header']): readonly string[] {

@@ -1,0 +1,91 @@
+import { imbalanceOf } from '../circuit/imbalance.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Amperes, Ratio } from '../quantity/quantity.js';
+import type { RunHeader } from '../record/run-header.js';
+import { type Finding, measured } from './finding.js';
+import { budgetOf, type GroupLook } from './module-currents.js';
+
+/**
+ * `share-of-<module>`: its current over that of all modules, sₖ = Iₖ/ΣI, at a look. ∂sₖ/∂Iⱼ = (δₖⱼ − sₖ)/ΣI,
+ * so that whatever scales all currents alike drops out.
+ * @param curve all held looks, for what the note tells of the rest.
+ */
+export function shareFindings(
+  header: RunHeader,
+  look: GroupLook,
+  curve: readonly GroupLook[],
+): readonly Finding[] {
+  const sum = sumOf(look);
+  return look.currents.map(({ module, current, place }, index) => {
+    const share = current / sum;
+    const weights = look.currents.map((_, other) => ((other === index ? 1 : 0) - share) / sum);
+    const lowest = curve[0];
+    const there = lowest?.currents.find((each) => each.place === place)?.current ?? 0;
+    const elsewhere =
+      lowest === undefined || lowest.total >= look.total
+        ? ''
+        : `; ${percent(there / sumOf(lowest))} of ${amps(lowest.total)}`;
+    return measured(`share-of-${module}`, 'ratio', share, budgetOf(header, look, { modules: weights }), {
+      step: look.step,
+      note: `${amps(current)} of ${amps(look.total)}${elsewhere}`,
+    });
+  });
+}
+
+/**
+ * `imbalance`: (largest − smallest)/mean of the modules' currents at a look. Which are the largest and the
+ * smallest is taken from what was read; with m = mean, ∂/∂Iⱼ = (δ_max,j − δ_min,j)/m − imbalance/(N·m).
+ */
+export function imbalanceFinding(
+  header: RunHeader,
+  look: GroupLook,
+  { setting, curve }: { readonly setting: Ratio; readonly curve: readonly GroupLook[] },
+): Finding {
+  const currents = look.currents.map(({ current }) => current);
+  const value = imbalanceOf(currents);
+  const { length } = currents;
+  const mean = sumOf(look) / length;
+  const most = currents.indexOf(Math.max(...currents));
+  const least = currents.lastIndexOf(Math.min(...currents));
+  const weights = currents.map(
+    (_, index) => (Number(index === most) - Number(index === least) - value / length) / mean,
+  );
+  return measured('imbalance', 'ratio', value, budgetOf(header, look, { modules: weights }), {
+    step: look.step,
+    note: `at ${amps(look.total)}; ${percent(setting)} asked for${elsewhereInWords(look, curve)}`,
+  });
+}
+
+function elsewhereInWords(look: GroupLook, curve: readonly GroupLook[]): string {
+  const [lowest] = curve;
+  const first = curve.find(({ set, step }) => set === look.set && step === look.step);
+  const at = (one: GroupLook): string => percent(imbalanceOf(one.currents.map((each) => each.current)));
+  const below =
+    lowest === undefined || lowest.total >= look.total ? '' : `; ${at(lowest)} at ${amps(lowest.total)}`;
+  if (first === undefined || first === look) return below;
+  const held = formatQuantity(lastTime(look) - lastTime(first), 'time', { significant: 2 });
+  return `${below}; ${at(first)} when that was reached, ${held} before`;
+}
+
+function lastTime({ points }: GroupLook): number {
+  return Math.max(...points.map(({ t }) => t));
+}
+
+export function sumOf({ currents }: GroupLook): Amperes {
+  return currents.reduce((sum, { current }) => sum + current, 0);
+}
+
+/** Which carries most and which least. */
+export function extremesOf({ currents }: GroupLook): { readonly most: string; readonly least: string } {
+  const falling = [...currents].sort((one, other) => other.current - one.current);
+  return { most: falling[0]?.module ?? '', least: falling.at(-1)?.module ?? '' };
+}
+
+export function amps(current: Amperes): string {
+  return formatQuantity(current, 'current', { significant: 3 });
+}
+
+/** To a whole percent, from ten on; else to two digits. */
+export function percent(ratio: Ratio): string {
+  return formatQuantity(ratio, 'ratio', { significant: Math.abs(ratio) >= 0.9995 ? 3 : 2 });
+}

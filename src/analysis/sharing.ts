@@ -1,0 +1,71 @@
+import type { Ratio } from '../quantity/quantity.js';
+import type { CurvePoint } from './curve.js';
+import type { Evidence } from './evidence.js';
+import { type Finding, inWords } from './finding.js';
+import { recommendedBallast } from './group-ballast.js';
+import { groupCurrent, howItFailed } from './group-current.js';
+import { heldLooks } from './held-looks.js';
+import { hoggingFinding } from './hogging.js';
+import { currentsAddUp } from './kirchhoff.js';
+import { groupLooks } from './module-currents.js';
+import { moduleLines } from './module-lines.js';
+import { firstToSaturate } from './saturation.js';
+import { imbalanceFinding, shareFindings } from './shares.js';
+
+/** What the step takes when a procedure says nothing; a record made elsewhere may hold neither. */
+const usual = { imbalance: 0.1, tolerance: 0.01 };
+
+/**
+ * How a parallel group shares its load: `group-current`, `hogging-module`, `recommended-ballast`,
+ * `imbalance` and `share-of-<module>`, the last two at the highest point that was held. Nothing that rests
+ * on the modules' currents is given unless these add up to the load's (Kirchhoff); where a ballast is what
+ * is wrong, `ballast-of-<module>` names it.
+ */
+export function sharingFindings(
+  evidence: Evidence,
+  found: { readonly dropout: Finding | undefined; readonly held: readonly CurvePoint[] },
+): readonly Finding[] {
+  const { header } = evidence;
+  if (header.circuit !== 'parallel') return [];
+  const looks = groupLooks(evidence);
+  const addUp = currentsAddUp(header, looks);
+  const held = heldLooks(header, looks);
+  const highest = held.at(-1);
+  const step = looks[0]?.step ?? null;
+  if (addUp.kind === 'wrong-ballasts' || addUp.kind === 'unexplained') {
+    return [
+      ...present(groupCurrent(evidence, found, '')),
+      inWords('hogging-module', 'undetermined', { step, note: addUp.note }),
+      ...(addUp.kind === 'wrong-ballasts' ? addUp.ballasts : []),
+    ];
+  }
+  if (highest === undefined) return present(groupCurrent(evidence, found, ''));
+  const saturated = firstToSaturate(held);
+  const { imbalance: setting, tolerance } = settingsOf(evidence, highest.step);
+  const lines = moduleLines(header, looks, saturated);
+  return [
+    ...present(groupCurrent(evidence, found, howItFailed({ ...found, held, looks, saturated }))),
+    ...present(hoggingFinding(header, { held, looks, lines, saturated, setting })),
+    recommendedBallast(header, lines, {
+      load: highest.total,
+      imbalance: setting,
+      tolerance,
+      step: highest.step,
+    }),
+    imbalanceFinding(header, highest, { setting, curve: held }),
+    ...shareFindings(header, highest, held),
+  ];
+}
+
+function settingsOf({ steps }: Evidence, step: number): Record<'imbalance' | 'tolerance', Ratio> {
+  const settings = steps.find((one) => one.step === step)?.settings ?? {};
+  const { imbalance, tolerance } = settings;
+  return {
+    imbalance: typeof imbalance === 'number' && imbalance > 0 ? imbalance : usual.imbalance,
+    tolerance: typeof tolerance === 'number' && tolerance >= 0 && tolerance < 1 ? tolerance : usual.tolerance,
+  };
+}
+
+function present(finding: Finding | undefined): readonly Finding[] {
+  return finding === undefined ? [] : [finding];
+}
