@@ -121,6 +121,49 @@ describe('a guard stops the run, saying what was read and who set the limit, at'
   });
 });
 
+describe('what a guard looks at beside the output of the whole', () => {
+  const at = (of: Taken['of'], what: Taken['what'], number: number, where?: string): Taken => ({
+    of,
+    what,
+    measurement: value(number),
+    ...(where === undefined ? {} : { at: where }),
+  });
+  const guarded =
+    (taken: readonly Taken[], change: Partial<GuardLimits> = {}) =>
+    () => {
+      guard(taken, { ...limits, ...change });
+    };
+
+  it('is the temperature, where the bench limits it', () => {
+    const hot = [at('thermometer', 'temperature', 81.26)];
+    expect(guarded(hot)).not.toThrow();
+    expect(guarded(hot, { temperature: 81.5 })).not.toThrow();
+    expect(guarded(hot, { temperature: 80 })).toThrow(
+      expect.objectContaining({
+        code: 'GUARD_TRIPPED',
+        exitCode: 3,
+        guard: 'over-temperature',
+        message: 'the thermometer reads 81.26 °C and the bench allows 80 °C',
+      }),
+    );
+  });
+
+  it('is not the sign or the size of what is read across a ballast, or across a module of a stack', () => {
+    expect(guarded([at('meter', 'voltage', -0.6, 'ballast-of-K1')])).not.toThrow();
+    expect(guarded([at('meter-2', 'voltage', -0.6, 'output-of-K2')])).not.toThrow();
+  });
+
+  it('is an overload there too', () => {
+    const taken: Taken[] = [{ of: 'meter-2', what: 'voltage', at: 'ballast-of-K2', measurement: overload }];
+    expect(guarded(taken)).toThrow('the meter-2 shows overload instead of a voltage');
+  });
+
+  it('is no resistance: open leads show overload', () => {
+    const taken: Taken[] = [{ of: 'meter', what: 'resistance', at: 'leads', measurement: overload }];
+    expect(guarded(taken)).not.toThrow();
+  });
+});
+
 describe('samples that show nothing', () => {
   it('stop the run at the third in a row', () => {
     const blind = new BlindSamples();
@@ -157,5 +200,15 @@ describe('a value out of a sample', () => {
     expect(valueOf(taken, 'load', 'voltage')).toBeNaN();
     expect(valueOf(taken, 'load', 'current')).toBeNaN();
     expect(valueOf(taken, 'meter', 'current')).toBeNaN();
+  });
+
+  it('is that of the usual place, or of the place that is asked for', () => {
+    const taken: Taken[] = [
+      { of: 'meter', what: 'voltage', at: 'ballast-of-K1', measurement: value(0.15) },
+      { of: 'meter', what: 'voltage', measurement: value(15.1) },
+    ];
+    expect(valueOf(taken, 'meter', 'voltage')).toBe(15.1);
+    expect(valueOf(taken, 'meter', 'voltage', 'ballast-of-K1')).toBe(0.15);
+    expect(valueOf(taken, 'meter', 'voltage', 'ballast-of-K2')).toBeNaN();
   });
 });

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { openBench } from '../../src/bench/open-bench.js';
-import { checkInputIsOff, checkOpenCircuitVoltage } from '../../src/bench/pre-flight.js';
+import { checkInputIsOff, checkMeters, checkOpenCircuitVoltage } from '../../src/bench/pre-flight.js';
 import { nursery, type NurseryChange } from './nursery-bench.js';
 
 async function opened(change: NurseryChange = {}) {
@@ -95,5 +95,44 @@ describe('before anything is switched on', () => {
       onNotice: () => undefined,
     });
     await expect(checkOpenCircuitVoltage(bench, 15)).rejects.toThrow(/the module reads -1\d(\.\d+)? V$/);
+  });
+
+  it.each([
+    [
+      'at another place',
+      '0.151',
+      /^before anything was switched on: with the input off the meter reads 151\.0 mV and the load 15\.\d+ V$/,
+    ],
+    ['with swapped probes', '-15.2', /the meter reads -15\.20 V and the load 15\.\d+ V$/],
+    ['set to something that is not dc voltage', '14.6', /the meter reads 14\.60 V and the load 15\.\d+ V$/],
+  ])('a meter %s does not read what the load reads, and both are named', async (_, meterReads, message) => {
+    const { bench } = await opened({ meterReads });
+    await expect(checkOpenCircuitVoltage(bench, 15)).rejects.toMatchObject({
+      code: 'PRE_FLIGHT',
+      message: expect.stringMatching(message) as string,
+      advice: expect.stringMatching(/^are the meter's probes at the output .*\?$/) as string,
+    });
+  });
+
+  it('meter and load may differ by what both promise, and 2 % more', async () => {
+    const { bench } = await opened({ meterReads: '15.0' });
+    await expect(checkOpenCircuitVoltage(bench, 15)).resolves.toBeCloseTo(15, 9);
+  });
+
+  it('a meter that says what it is set to is asked, and named when it is the wrong thing', async () => {
+    const { bench, clock } = await opened({ simulation: { faults: [{ at: 1, what: 'meter-wrong-mode' }] } });
+    await expect(checkMeters(bench)).resolves.toBeUndefined();
+    await clock.sleep(2);
+    await expect(checkMeters(bench)).rejects.toMatchObject({
+      code: 'WRONG_PLACE',
+      exitCode: 3,
+      what: 'meter-in-wrong-mode',
+      advice: expect.stringContaining('set it to dc voltage') as string,
+    });
+  });
+
+  it('a meter that can not say what it is set to is not asked', async () => {
+    const { bench } = await opened({ file: 'nursery-short' });
+    await expect(checkMeters(bench)).resolves.toBeUndefined();
   });
 });

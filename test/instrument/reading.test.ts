@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { readFlag, readNumber } from '../../src/instrument/reading.js';
+import { readChannel, readFlag, readNumber } from '../../src/instrument/reading.js';
 
 const about = { address: 'tcp://127.0.0.1:5025', question: 'VOL?' };
 
@@ -58,4 +58,45 @@ describe('a yes or no', () => {
       expect(() => readFlag(reply, reading, about)).toThrow(/0, OFF, FALSE or NO/);
     },
   );
+});
+
+describe('a yes or no whose no the driver describes', () => {
+  const reading = { kind: 'flag', ask: ['CONF?'], trueWhen: /^"VOLT/, falseWhen: /^"[A-Z]+/ } as const;
+
+  it.each([
+    ['"VOLT 10,0.001"', true],
+    ['"RES 1000,0.001"', false],
+    [' "CURR" ', false],
+  ])('%s', (reply, yes) => {
+    expect(readFlag(reply, reading, about)).toBe(yes);
+  });
+
+  it.each(['', '10', '0', 'NO', `"${'R'.repeat(2000)}"`])('is neither in "%s"', (reply) => {
+    expect(() => readFlag(reply, reading, about)).toThrow(
+      expect.objectContaining({
+        code: 'REPLY_NOT_UNDERSTOOD',
+        expected: 'a reply that fits /^"VOLT/, or /^"[A-Z]+/',
+      }) as Error,
+    );
+  });
+});
+
+describe('the closed channel of a scanner', () => {
+  const reading = { kind: 'channel', ask: ['CLOSED?'], channelIn: /^\(@(?<value>[0-9,]+)\)$/ } as const;
+
+  it.each([
+    ['(@101)', 101],
+    [' (@7) ', 7],
+    ['(@)', null],
+    ['', null],
+    ['nothing is closed', null],
+  ])('in "%s"', (reply, channel) => {
+    expect(readChannel(reply, reading, about)).toBe(channel);
+  });
+
+  it.each(['(@101,102)', '(@1234567)', `(@1)${' '.repeat(2000)}`])('is not in "%s"', (reply) => {
+    expect(() => readChannel(reply, reading, about)).toThrow(
+      expect.objectContaining({ code: 'REPLY_NOT_UNDERSTOOD' }) as Error,
+    );
+  });
 });

@@ -1,0 +1,40 @@
+import { expect, it } from 'vitest';
+import { withAddresses } from '../../src/files/live-bench.js';
+import { parseBench } from '../../src/files/read-bench.js';
+
+const text = `railproof: bench 1
+name: nursery group   # what stays stays
+instruments:
+  load: { driver: load-input-scpi, connection: 'simulated:' }
+  meter: { driver: meter-read-scpi, connection: 'simulated:' }
+voltage-from: meter-at-module
+limits: { voltage: 60 V, current: 8 A, power: 120 W }
+group:
+  measured-by: meters
+  places:
+    - meter: { driver: meter-query-scpi, connection: 'simulated:' }
+    - meter: { driver: meter-query-scpi, connection: 'simulated:' }
+simulation:
+  circuit: series
+  modules:
+    - { name: K1, open-circuit-voltage: 15 V, droop-resistance: 18 mΩ, limit: { style: hiccup, current: 5 A } }
+    - { name: K2, open-circuit-voltage: 15 V, droop-resistance: 18 mΩ, limit: { style: hiccup, current: 5 A } }
+`;
+
+it('a served bench is real to whoever uses it: every address of it, those at the places among them', () => {
+  const live = withAddresses(text, {
+    load: 'tcp://127.0.0.1:1',
+    meter: 'tcp://127.0.0.1:2',
+    'meter-1': 'tcp://127.0.0.1:11',
+    'meter-2': 'serial:/dev/pts/7?baud=115200',
+  });
+  expect(live).toContain('# what stays stays');
+  const { instruments, group, simulation } = parseBench(live, 'live.yaml');
+  expect(simulation).toBeUndefined();
+  expect(instruments.load.connection).toEqual({ kind: 'tcp', host: '127.0.0.1', port: 1 });
+  expect(instruments.meter?.connection).toMatchObject({ port: 2 });
+  expect(group?.places.map(({ meter }) => meter?.connection)).toMatchObject([
+    { kind: 'tcp', port: 11 },
+    { kind: 'serial', path: '/dev/pts/7' },
+  ]);
+});
