@@ -1,3 +1,4 @@
+import type { SimulatedModule } from '../files/simulation-section.js';
 import type { Ohms, Seconds, Volts } from '../quantity/quantity.js';
 import type { CircuitState } from './circuit-state.js';
 import { shortedPlaces } from './earth-bonds.js';
@@ -32,7 +33,7 @@ export function disturbances(
   at: Seconds,
 ): Disturbances {
   const sources = circuit.modules.map((module, place): Disturbance => {
-    const { rise = 0, phase = undefined } = state.modules[place] ?? {};
+    const { rise = 0, phase } = state.modules[place] ?? {};
     const current = point.modules[place]?.current ?? 0;
     return {
       ripple: phase?.kind === 'held' ? rippleOf(module, rise, current, at) : 0,
@@ -66,21 +67,9 @@ function onTheBus(
   if (sources.every(({ ripple, noise }) => ripple === 0 && noise === 0)) {
     return { output: none, modules: modules.map(() => ({ own: none, ballast: none })) };
   }
-  const feeds = modules.map(
-    (_, place) => state.modules[place]?.phase.kind === 'held' && (point.modules[place]?.current ?? 0) > 0,
-  );
-  // With no load at all the one that stands highest has the bus to itself.
-  const highest = Math.max(
-    ...modules.map(({ openCircuitVoltage }, place) =>
-      state.modules[place]?.phase.kind === 'held' ? openCircuitVoltage : 0,
-    ),
-  );
-  const isIdle = !feeds.includes(true);
-  const weights = modules.map(({ openCircuitVoltage, droopResistance, ballast }, place) => {
-    const sets = isIdle
-      ? state.modules[place]?.phase.kind === 'held' && openCircuitVoltage === highest
-      : feeds[place] === true;
-    return sets ? 1 / Math.max(LEAST_RESISTANCE, droopResistance + ballast) : 0;
+  const weights = feedingPlaces(modules, state, point).map((feeds, place) => {
+    const { droopResistance = 0, ballast = 0 } = modules[place] ?? {};
+    return feeds ? 1 / Math.max(LEAST_RESISTANCE, droopResistance + ballast) : 0;
   });
   const whole = weights.reduce((sum, weight) => sum + weight, 0);
   const share = (place: number): number => (whole > 0 ? (weights[place] ?? 0) / whole : 0);
@@ -96,6 +85,26 @@ function onTheBus(
       };
     }),
   };
+}
+
+/** Those that set the bus: the ones that deliver. With no load the highest does; collapsed, whoever is at it. */
+function feedingPlaces(
+  modules: readonly SimulatedModule[],
+  state: CircuitState,
+  point: RestingPoint,
+): readonly boolean[] {
+  const isHeld = modules.map((_, place) => state.modules[place]?.phase.kind === 'held');
+  const feeds = isHeld.map((is, place) => is && (point.modules[place]?.current ?? 0) > 0);
+  if (feeds.includes(true)) return feeds;
+  if (!isHeld.includes(true)) {
+    return state.modules.map(({ phase }) => phase.kind === 'limiting' || phase.kind === 'retrying');
+  }
+  const highest = Math.max(
+    ...modules.map(({ openCircuitVoltage }, place) => (isHeld[place] === true ? openCircuitVoltage : 0)),
+  );
+  return modules.map(
+    ({ openCircuitVoltage }, place) => isHeld[place] === true && openCircuitVoltage === highest,
+  );
 }
 
 function combined(sources: readonly Disturbance[], factor: (place: number) => number): Disturbance {

@@ -1,10 +1,13 @@
 import type { LoadLaw } from '../circuit/load-law.js';
-import type { Seconds } from '../quantity/quantity.js';
+import type { SimulatedModule } from '../files/simulation-section.js';
+import type { Kelvins, Ratio, Seconds } from '../quantity/quantity.js';
 import type { CircuitState } from './circuit-state.js';
 import { curveOf, leastHeldVoltage, startingCurveOf } from './module-curve-of.js';
 import { type Part, type RestingPoint, type SimulatedCircuit, restingPoint } from './resting-point.js';
 import { ATTEMPT_SHARE } from './retry.js';
-import { delivers, periodOf } from './virtual-module.js';
+import { staysAtItsLimit } from './standing.js';
+import { type ModulePhase, delivers, periodOf } from './virtual-module.js';
+import { limitFactor } from './warming.js';
 
 /** Whether a module that first tripped at `since` is just trying. */
 export type IsTrying = (since: Seconds, period: Seconds) => boolean;
@@ -21,28 +24,67 @@ export function goalPoint(
   isTrying: IsTrying,
 ): RestingPoint {
   const isHeldUp = circuit.circuit === 'parallel' && state.modules.some(({ phase }) => phase.kind === 'held');
-  const parts = circuit.modules.map((module, place): Part => {
-    const { rise = 0, phase = undefined } = state.modules[place] ?? {};
-    switch (phase?.kind) {
-      case 'held':
-        return { kind: 'curve', curve: curveOf(module, rise), from: 'above' };
-      case 'limiting':
-        return isHeldUp && module.limit.style !== 'constant-current'
-          ? { kind: 'nothing' }
-          : { kind: 'curve', curve: startingCurveOf(module, rise), from: 'below' };
-      case 'retrying':
-        return !isHeldUp && isTrying(phase.since, periodOf(module))
-          ? { kind: 'curve', curve: startingCurveOf(module, rise), from: 'below' }
-          : { kind: 'nothing' };
-      case 'off':
-      case 'latched':
-      case undefined:
-        return { kind: 'nothing' };
-    }
-  });
-  return circuit.circuit === 'parallel' && !isHeldUp
-    ? withoutFailedAttempts(circuit, state, law, parts)
-    : withoutLost(circuit, state, law, parts);
+  const gives = circuit.modules.map((module, place) =>
+    givesNow(module, state.modules[place]?.phase ?? { kind: 'off' }, isHeldUp, isTrying),
+  );
+  const factors = circuit.modules.map((module, place) =>
+    limitFactor(module, state.modules[place]?.rise ?? 0),
+  );
+  const last = lastGoal.get(law);
+  if (last?.circuit === circuit && isSame(last.gives, gives) && isSame(last.factors, factors))
+    return last.point;
+  const parts = circuit.modules.map((module, place) =>
+    partOf(module, state.modules[place]?.rise ?? 0, gives[place] ?? 'nothing'),
+  );
+  const point =
+    circuit.circuit === 'parallel' && !isHeldUp
+      ? withoutFailedAttempts(circuit, state, law, parts)
+      : withoutLost(circuit, state, law, parts);
+  lastGoal.set(law, { circuit, gives, factors, point });
+  return point;
+}
+
+type Gives = 'on its curve' | 'from below' | 'nothing';
+
+function givesNow(module: SimulatedModule, phase: ModulePhase, isHeldUp: boolean, isTrying: IsTrying): Gives {
+  switch (phase.kind) {
+    case 'held':
+      return 'on its curve';
+    case 'limiting':
+      return isHeldUp && !staysAtItsLimit(module) ? 'nothing' : 'from below';
+    case 'retrying':
+      return !isHeldUp && isTrying(phase.since, periodOf(module)) ? 'from below' : 'nothing';
+    case 'off':
+    case 'latched':
+      return 'nothing';
+  }
+}
+
+function partOf(module: SimulatedModule, rise: Kelvins, gives: Gives): Part {
+  switch (gives) {
+    case 'on its curve':
+      return { kind: 'curve', curve: curveOf(module, rise), from: 'above' };
+    case 'from below':
+      return { kind: 'curve', curve: startingCurveOf(module, rise), from: 'below' };
+    case 'nothing':
+      return { kind: 'nothing' };
+  }
+}
+
+/** Asked again and again of one moment and of the next, so the last answer is kept. */
+const lastGoal = new WeakMap<
+  LoadLaw,
+  {
+    readonly circuit: SimulatedCircuit;
+    readonly gives: readonly Gives[];
+    /** Of a rise only what it does to the limit counts. */
+    readonly factors: readonly Ratio[];
+    readonly point: RestingPoint;
+  }
+>();
+
+function isSame(some: readonly unknown[], others: readonly unknown[]): boolean {
+  return some.every((one, place) => one === others[place]);
 }
 
 /** What heats: the square of each module's current, averaged over the periods of those that keep trying. */
@@ -72,16 +114,20 @@ function withoutLost(
   parts: readonly Part[],
 ): RestingPoint {
   const point = restingPoint(circuit, parts, law);
-  let isLost = false;
-  const fallen = parts.map((part, place): Part => {
+  const isLost = parts.map((part, place) => {
     const module = circuit.modules[place];
     const rise = state.modules[place]?.rise ?? 0;
-    if (module === undefined || part.kind === 'nothing' || part.from === 'below') return part;
-    if (delivers(module, rise, point.modules[place]?.voltage ?? 0)) return part;
-    isLost = true;
-    return { kind: 'curve', curve: startingCurveOf(module, rise), from: 'below' };
+    if (module === undefined || part.kind === 'nothing' || part.from === 'below') return false;
+    return !delivers(module, rise, point.modules[place]?.voltage ?? 0);
   });
-  return isLost ? restingPoint(circuit, fallen, law) : point;
+  if (!isLost.includes(true)) return point;
+  const fallen = circuit.modules.map((module, place): Part => {
+    const curve = startingCurveOf(module, state.modules[place]?.rise ?? 0);
+    return isLost[place] === true
+      ? { kind: 'curve', curve, from: 'below' }
+      : (parts[place] ?? { kind: 'nothing' });
+  });
+  return restingPoint(circuit, fallen, law);
 }
 
 /**

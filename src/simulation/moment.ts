@@ -65,7 +65,7 @@ export function momentOf(facts: MomentFacts): Moment {
   const { state, point, leads, sign } = facts;
   const { output, modules: own } = disturbances(facts.circuit, state, point, state.at);
   const modules = facts.circuit.modules.map((module, place): ModuleMoment => {
-    const { rise = 0, phase = undefined } = state.modules[place] ?? {};
+    const { rise = 0, phase } = state.modules[place] ?? {};
     const { voltage = 0, current = 0, through = 0 } = point.modules[place] ?? {};
     const disturbed = own[place] ?? { own: none, ballast: none };
     return {

@@ -98,10 +98,21 @@ function worldOf(simulation: Simulation, load: Driver, random: Random): VirtualB
       setCurrent: errorOf(simulation, 'load', load, 'set-current', random),
       setVoltage: errorOf(simulation, 'load', load, 'set-voltage', random),
     }),
-    simulation.faults.filter(
-      (fault): fault is WorldFault => fault.what === 'module-dead' || fault.what === 'reversed',
-    ),
+    worldFaults(simulation),
   );
+}
+
+function worldFaults({ circuit, faults }: Simulation): readonly WorldFault[] {
+  const ofTheWorld = faults.filter(
+    (fault): fault is WorldFault => fault.what === 'module-dead' || fault.what === 'reversed',
+  );
+  if (circuit !== 'single' && ofTheWorld.some(({ what, of }) => what === 'reversed' && of !== undefined)) {
+    throw new CannotSimulateError({
+      what: 'one module of several that is wired the wrong way round',
+      advice: "Leave out its 'of': then the leads at the output of the whole are swapped.",
+    });
+  }
+  return ofTheWorld;
 }
 
 function theCircuit({ circuit, modules }: Simulation): Pick<Simulation, 'circuit' | 'modules'> {

@@ -4,11 +4,11 @@ import type { CircuitState } from './circuit-state.js';
 import { curveOf } from './module-curve-of.js';
 import { type Part, type SimulatedCircuit, restingPoint } from './resting-point.js';
 import { attemptBegins, attempting } from './retry.js';
-import { type Standing, standingOf } from './standing.js';
-import { type ModulePhase, delivers, overloaded, periodOf, staysAtItsLimit } from './virtual-module.js';
+import { type Standing, type Which, standingOf, staysAtItsLimit } from './standing.js';
+import { type ModulePhase, delivers, overloaded, periodOf } from './virtual-module.js';
 
-/** Which of the modules that keep trying may start now, by their places. */
-export type Tries = (circuit: SimulatedCircuit, state: CircuitState) => ReadonlySet<number>;
+/** Which of the modules that keep trying may start now. */
+export type Tries = (circuit: SimulatedCircuit, state: CircuitState) => Which;
 
 /** Once its load has eased, a module that retries starts whenever it tries. */
 export const whileTrying: Tries = (circuit, state) =>
@@ -20,7 +20,7 @@ export const whileTrying: Tries = (circuit, state) =>
  */
 export const withNewAttempts: Tries = (circuit, state) => {
   const beginning = retrying(circuit, state, (since, period) => attemptBegins(since, period, state.at));
-  return beginning.size === 0 ? beginning : whileTrying(circuit, state);
+  return beginning.includes(true) ? whileTrying(circuit, state) : beginning;
 };
 
 /** As if all tried at once: what could be. */
@@ -30,10 +30,10 @@ function retrying(
   { modules }: SimulatedCircuit,
   state: CircuitState,
   may: (since: number, period: number) => boolean,
-): ReadonlySet<number> {
-  return placesOf(state, ({ phase }, place) => {
-    const module = modules[place];
-    return module !== undefined && phase.kind === 'retrying' && may(phase.since, periodOf(module));
+): Which {
+  return modules.map((module, place) => {
+    const phase = state.modules[place]?.phase;
+    return phase?.kind === 'retrying' && may(phase.since, periodOf(module));
   });
 }
 
@@ -49,19 +49,18 @@ export function settle(
   tries: Tries,
 ): CircuitState {
   const rises = state.modules.map(({ rise }) => rise);
-  const feeding = placesOf(state, ({ phase }, place) => {
-    const module = circuit.modules[place];
-    if (module === undefined) return false;
-    return phase.kind === 'held' || (phase.kind === 'limiting' && staysAtItsLimit(module));
+  const feeding = circuit.modules.map((module, place) => {
+    const kind = state.modules[place]?.phase.kind;
+    return kind === 'held' || (kind === 'limiting' && staysAtItsLimit(module));
   });
   let standing = standingOf(circuit, rises, feeding, law);
   const trying = tries(circuit, state);
-  if (trying.size > 0) {
-    const withThem = standingOf(circuit, rises, union(standing.members, trying), law);
-    if ([...trying].some((place) => withThem.delivering.has(place))) standing = withThem;
+  if (trying.includes(true)) {
+    const withThem = standingOf(circuit, rises, either(standing.members, trying), law);
+    if (withThem.delivering.some((is, place) => is && trying[place] === true)) standing = withThem;
   }
   const back = comingBack(circuit, state, standing, law);
-  if (back.size > 0) standing = standingOf(circuit, rises, union(standing.members, back), law);
+  if (back.includes(true)) standing = standingOf(circuit, rises, either(standing.members, back), law);
   return {
     at: state.at,
     modules: state.modules.map((module, place) => ({
@@ -81,7 +80,7 @@ function phaseIn(
 ): ModulePhase | undefined {
   const module = modules[place];
   const isHeld = state.modules[place]?.phase.kind === 'held';
-  if (module === undefined || isHeld === delivering.has(place)) return undefined;
+  if (module === undefined || isHeld === delivering[place]) return undefined;
   return isHeld ? overloaded(module, state.at) : { kind: 'held', since: state.at, from: from[place] ?? 0 };
 }
 
@@ -95,53 +94,34 @@ const ROOM_TO_COME_BACK: Ratio = 0.02;
  * Of the modules that rest collapsed, those that come up again. Coming from below, even the lowest point at
  * which they could rest must be one at which they deliver.
  */
-function comingBack(
-  circuit: SimulatedCircuit,
-  state: CircuitState,
-  standing: Standing,
-  law: LoadLaw,
-): ReadonlySet<number> {
+function comingBack(circuit: SimulatedCircuit, state: CircuitState, standing: Standing, law: LoadLaw): Which {
   const rises = state.modules.map(({ rise }) => rise);
-  let candidates = placesOf(state, ({ phase }, place) => {
-    const module = circuit.modules[place];
-    return module !== undefined && phase.kind === 'limiting' && !staysAtItsLimit(module);
-  });
-  while (candidates.size > 0) {
-    const { members } = standingOf(circuit, rises, union(standing.members, candidates), law);
-    const left = [...candidates].filter((place) => members.has(place));
+  let candidates: Which = circuit.modules.map(
+    (module, place) => state.modules[place]?.phase.kind === 'limiting' && !staysAtItsLimit(module),
+  );
+  while (candidates.includes(true)) {
+    const { members } = standingOf(circuit, rises, either(standing.members, candidates), law);
     const parts = circuit.modules.map((module, place): Part => {
-      if (!members.has(place)) return { kind: 'nothing' };
-      const from = standing.delivering.has(place) ? 'above' : 'below';
+      if (members[place] !== true) return { kind: 'nothing' };
+      const from = standing.delivering[place] === true ? 'above' : 'below';
       return { kind: 'curve', curve: curveOf(module, rises[place] ?? 0), from };
     });
     const point = restingPoint(circuit, parts, law);
-    const able = left.filter((place) => {
-      const module = circuit.modules[place];
-      const found = point.modules[place];
+    const isBesideOthers = circuit.circuit === 'parallel' && standing.delivering.includes(true);
+    const able = circuit.modules.map((module, place) => {
+      const { voltage = 0, current = 0 } = point.modules[place] ?? {};
       const rise = rises[place] ?? 0;
-      if (module === undefined || found === undefined || !delivers(module, rise, found.voltage)) return false;
-      const isBesideOthers = circuit.circuit === 'parallel' && standing.delivering.size > 0;
+      if (candidates[place] !== true || members[place] !== true) return false;
+      if (!delivers(module, rise, voltage)) return false;
       if (!isBesideOthers || module.limit.style !== 'foldback') return true;
-      return found.current <= (1 - ROOM_TO_COME_BACK) * curveOf(module, rise).limit.current;
+      return current <= (1 - ROOM_TO_COME_BACK) * curveOf(module, rise).limit.current;
     });
-    if (able.length === candidates.size) break;
-    candidates = new Set(able);
+    if (able.every((is, place) => is === candidates[place])) break;
+    candidates = able;
   }
   return candidates;
 }
 
-function placesOf(
-  { modules }: CircuitState,
-  fits: (module: CircuitState['modules'][number], place: number) => boolean,
-): ReadonlySet<number> {
-  return new Set(
-    [...modules.keys()].filter((place) => {
-      const module = modules[place];
-      return module !== undefined && fits(module, place);
-    }),
-  );
-}
-
-function union(some: ReadonlySet<number>, others: ReadonlySet<number>): ReadonlySet<number> {
-  return new Set([...some, ...others]);
+function either(some: Which, others: Which): Which {
+  return some.map((is, place) => is || others[place] === true);
 }

@@ -1,16 +1,19 @@
 import type { LoadLaw } from '../circuit/load-law.js';
-import type { Kelvins } from '../quantity/quantity.js';
-import { curveOf, leastHeldVoltage } from './module-curve-of.js';
-import { type Part, type RestingPoint, type SimulatedCircuit, restingPoint } from './resting-point.js';
-import { delivers, staysAtItsLimit } from './virtual-module.js';
+import type { ModuleCurve } from '../circuit/module-curve.js';
+import type { SimulatedModule } from '../files/simulation-section.js';
+import type { Amperes, Kelvins, Ratio } from '../quantity/quantity.js';
+import { curveOf } from './module-curve-of.js';
+import { type ModulePoint, type Part, type SimulatedCircuit, restingPoint } from './resting-point.js';
+import { delivers } from './virtual-module.js';
 import { limitFactor } from './warming.js';
 
-/** Which modules feed a circuit, by their places, and where it rests with them. */
+/** Yes or no for each module, in the order of the circuit. */
+export type Which = readonly boolean[];
+
+/** Which modules feed a circuit, and which of these deliver; the others of them give their limit. */
 export interface Standing {
-  readonly members: ReadonlySet<number>;
-  /** Those of the members that deliver; the others give their limit. */
-  readonly delivering: ReadonlySet<number>;
-  readonly point: RestingPoint;
+  readonly members: Which;
+  readonly delivering: Which;
 }
 
 /**
@@ -22,78 +25,94 @@ export interface Standing {
 export function standingOf(
   circuit: SimulatedCircuit,
   rises: readonly Kelvins[],
-  asked: ReadonlySet<number>,
+  asked: Which,
   law: LoadLaw,
 ): Standing {
-  const key = keyOf(circuit, rises, asked);
-  const last = lastStanding.get(law);
-  if (last?.circuit === circuit && last.key === key) return last.standing;
-  const standing = cascade(circuit, rises, asked, law);
-  lastStanding.set(law, { circuit, key, standing });
-  return standing;
+  const members = [...asked];
+  for (;;) {
+    const points = pointsOf(circuit, rises, members, law);
+    const delivering = circuit.modules.map(
+      (module, place) =>
+        members[place] === true && within(module, rises[place] ?? 0, points[place] ?? nowhere),
+    );
+    let furthest: { readonly place: number; readonly past: Amperes } | undefined;
+    for (const [place, module] of circuit.modules.entries()) {
+      if (members[place] !== true || delivering[place] === true || staysAtItsLimit(module)) continue;
+      const past = (points[place]?.current ?? 0) - limitOf(module, rises[place] ?? 0);
+      if (furthest === undefined || past > furthest.past) furthest = { place, past };
+    }
+    if (furthest === undefined) return { members, delivering };
+    members[furthest.place] = false;
+  }
 }
 
-/** Asked again and again of one moment, so the last answer is kept. Of a rise only what it does to the limit counts. */
-const lastStanding = new WeakMap<
-  LoadLaw,
-  { readonly circuit: SimulatedCircuit; readonly key: string; readonly standing: Standing }
->();
-
-function keyOf({ modules }: SimulatedCircuit, rises: readonly Kelvins[], asked: ReadonlySet<number>): string {
-  return modules
-    .map((module, place) => (asked.has(place) ? limitFactor(module, rises[place] ?? 0) : 'out'))
-    .join(' ');
+/** Whether it goes on giving its limit when pushed past it; all others let go of what they feed. */
+export function staysAtItsLimit({ limit }: SimulatedModule): boolean {
+  return limit.style === 'constant-current';
 }
 
-function cascade(
+const nowhere: ModulePoint = { voltage: 0, current: 0, through: 0 };
+
+function limitOf(module: SimulatedModule, rise: Kelvins): Amperes {
+  return module.limit.current * limitFactor(module, rise);
+}
+
+/** Past its limit there is no staying: whether it gets there shows best in what would be asked of it without. */
+function isAllOrNothing({ limit }: SimulatedModule): boolean {
+  return limit.style !== 'constant-current' && limit.style !== 'constant-power';
+}
+
+function within(module: SimulatedModule, rise: Kelvins, { voltage, current }: ModulePoint): boolean {
+  return isAllOrNothing(module)
+    ? current <= limitOf(module, rise) * (1 + 1e-12)
+    : delivers(module, rise, voltage);
+}
+
+/** A limit that nothing reaches. */
+const WITHOUT_LIMIT: Ratio = 1e6;
+
+function askedCurveOf(module: SimulatedModule, rise: Kelvins): ModuleCurve {
+  if (!isAllOrNothing(module)) return curveOf(module, rise);
+  const { openCircuitVoltage, droopResistance, limit } = module;
+  return {
+    openCircuitVoltage,
+    droopResistance,
+    limit: { style: 'constant-current', current: WITHOUT_LIMIT * limit.current },
+  };
+}
+
+interface Solved {
+  /** Of those whose limit has a part in it. */
+  readonly limits: readonly (Amperes | undefined)[];
+  readonly points: readonly ModulePoint[];
+}
+
+/** For each load the last answer for each choice of members: a search for a moment asks again and again. */
+const solved = new WeakMap<LoadLaw, { circuit: SimulatedCircuit; byMembers: Map<string, Solved> }>();
+
+function pointsOf(
   circuit: SimulatedCircuit,
   rises: readonly Kelvins[],
-  asked: ReadonlySet<number>,
+  members: Which,
   law: LoadLaw,
-): Standing {
-  const members = new Set(asked);
-  for (;;) {
-    const point = restingPoint(circuit, partsOf(circuit, rises, members), law);
-    const isDelivering = (place: number): boolean => {
-      const module = circuit.modules[place];
-      const voltage = point.modules[place]?.voltage ?? 0;
-      return module !== undefined && delivers(module, rises[place] ?? 0, voltage);
-    };
-    const leaver = furthestPast(circuit, rises, members, point);
-    if (leaver === undefined) {
-      return { members, delivering: new Set([...members].filter(isDelivering)), point };
-    }
-    members.delete(leaver);
+): readonly ModulePoint[] {
+  let known = solved.get(law);
+  if (known?.circuit !== circuit) {
+    known = { circuit, byMembers: new Map() };
+    solved.set(law, known);
   }
-}
-
-function partsOf(
-  { modules }: SimulatedCircuit,
-  rises: readonly Kelvins[],
-  members: ReadonlySet<number>,
-): readonly Part[] {
-  return modules.map((module, place) =>
-    members.has(place)
-      ? { kind: 'curve', curve: curveOf(module, rises[place] ?? 0), from: 'above' }
+  const key = members.map((is) => (is ? '1' : '0')).join('');
+  const limits = circuit.modules.map((module, place) =>
+    members[place] === true && !isAllOrNothing(module) ? limitOf(module, rises[place] ?? 0) : undefined,
+  );
+  const last = known.byMembers.get(key);
+  if (last !== undefined && limits.every((limit, place) => limit === last.limits[place])) return last.points;
+  const parts = circuit.modules.map((module, place): Part =>
+    members[place] === true
+      ? { kind: 'curve', curve: askedCurveOf(module, rises[place] ?? 0), from: 'above' }
       : { kind: 'nothing' },
   );
-}
-
-/** Of the members that leave when pushed past their limit: the one whose output has sagged most below it. */
-function furthestPast(
-  { modules }: SimulatedCircuit,
-  rises: readonly Kelvins[],
-  members: ReadonlySet<number>,
-  point: RestingPoint,
-): number | undefined {
-  let furthest: { readonly place: number; readonly past: number } | undefined;
-  for (const [place, module] of modules.entries()) {
-    if (!members.has(place) || staysAtItsLimit(module)) continue;
-    const rise = rises[place] ?? 0;
-    const voltage = point.modules[place]?.voltage ?? 0;
-    if (delivers(module, rise, voltage)) continue;
-    const past = leastHeldVoltage(module, rise) - voltage;
-    if (furthest === undefined || past > furthest.past) furthest = { place, past };
-  }
-  return furthest?.place;
+  const points = restingPoint(circuit, parts, law).modules;
+  known.byMembers.set(key, { limits, points });
+  return points;
 }

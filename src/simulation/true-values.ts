@@ -3,6 +3,7 @@ import type { SimulatedModule, Simulation } from '../files/simulation-section.js
 import type { Amperes, Kelvins, Ohms, Ratio, Volts } from '../quantity/quantity.js';
 import { SHUTDOWN_SHARE, curveOf } from './module-curve-of.js';
 import { unsteadyAboveOf } from './ripple.js';
+import { steadyRise } from './warming.js';
 
 /** What a perfect measurement would find. */
 export interface TrueValues {
@@ -17,6 +18,8 @@ export interface TrueValues {
   readonly limitStyle: SimulatedModule['limit']['style'];
   /** The smallest current at which the voltage has sagged by the share of the open-circuit voltage. */
   readonly dropoutCurrent: (sag: Ratio) => Amperes;
+  /** Above the air, after a long time at a current. */
+  readonly settledRise: (current: Amperes) => Kelvins;
 }
 
 /** The truth about a simulated module, at a rise of its temperature above ambient (cold when left out). */
@@ -36,6 +39,7 @@ export function trueValues(
     limitStyle: module.limit.style,
     dropoutCurrent: (sag) =>
       currentAtSag(curve, module.limit.style === 'constant-power' ? Math.min(sag, 1 - SHUTDOWN_SHARE) : sag),
+    settledRise: (current) => steadyRise(module, current ** 2),
   };
 
   function shortCircuitCurrent({ limit }: typeof curve): Amperes | undefined {

@@ -37,13 +37,16 @@ export class VirtualBench {
   #reversed = false;
   readonly #faults: WorldFault[];
 
+  /** @throws UnknownModuleError for a fault of a module that is not there. */
   constructor(circuit: SimulatedCircuit, hardware: LoadHardware, faults: readonly WorldFault[] = []) {
     this.#circuit = circuit;
     this.#inputs = circuit.modules.map(() => 'present');
     this.#hardware = hardware;
     this.#law = lawOf(loadAtRest, hardware);
     this.#faults = faults.toSorted((one, other) => one.at - other.at);
-    this.#state = freshCircuit(circuit.modules, 0);
+    for (const { of } of faults) if (of !== undefined) this.#placeOf(of);
+    // Bonds to earth may short a module from the very beginning.
+    this.#state = onNewLoad(circuit, freshCircuit(circuit.modules, 0), this.#law, this.#law);
   }
 
   get circuit(): Simulation['circuit'] {

@@ -44,11 +44,6 @@ export function overloaded({ limit }: SimulatedModule, at: Seconds): ModulePhase
   }
 }
 
-/** Whether it goes on giving its limit when pushed past it; all others let go of what they feed. */
-export function staysAtItsLimit({ limit }: SimulatedModule): boolean {
-  return limit.style === 'constant-current';
-}
-
 /** Whether a module with this voltage at its output is delivering, and not at its limit. */
 export function delivers(module: SimulatedModule, rise: Kelvins, voltage: Volts): boolean {
   return voltage >= leastHeldVoltage(module, rise) * (1 - 1e-12);
