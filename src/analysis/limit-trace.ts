@@ -1,5 +1,6 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Ohms, Volts } from '../quantity/quantity.js';
+import { mean } from '../statistics/checked.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence, StepEvidence } from './evidence.js';
 import type { Verdict } from './limit-verdict.js';
@@ -13,6 +14,7 @@ export interface LimitTrace extends Verdict {
 
 /** A point of the limit curve. */
 export interface TracedPoint {
+  /** At the module; what the load held where the module gave nothing steady. */
   readonly voltage: Volts;
   readonly current: Amperes;
 }
@@ -75,15 +77,15 @@ function tracedPoint({ phase, outcome, set, samples }: PointEvidence): readonly 
   const least = gone * set.voltage;
   const whole = samples.filter(({ voltage, current }) => Number.isFinite(voltage + current));
   const giving = whole.filter(({ voltage }) => voltage >= least);
-  const meanOf = (values: readonly number[]): number =>
-    values.reduce((sum, value) => sum + value, 0) / values.length;
   if (whole.length === 0) return [];
-  if (giving.length === 0) return [{ gives: 'none', voltage: set.voltage, current: 0 }];
+  if (giving.length < whole.length) {
+    return [{ gives: giving.length === 0 ? 'none' : 'some', voltage: set.voltage, current: 0 }];
+  }
   return [
     {
-      gives: giving.length === whole.length ? 'all' : 'some',
-      voltage: meanOf(giving.map(({ voltage }) => voltage)),
-      current: meanOf(giving.map(({ current }) => current)),
+      gives: 'all',
+      voltage: mean(giving.map(({ voltage }) => voltage)),
+      current: mean(giving.map(({ current }) => current)),
     },
   ];
 }

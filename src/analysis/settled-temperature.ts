@@ -52,7 +52,7 @@ export function settledTemperature(
       const watched = (t.at(-1) ?? 0) - (t[0] ?? 0);
       return watched < enough ? undefined : fromMean(outcome);
     }
-    if (outcome.why !== 'accelerating' && outcome.why !== 'sudden') return undefined;
+    if (outcome.why === 'straight' || outcome.why === 'too-few-points') return undefined;
   }
   return undefined;
 }

@@ -26,6 +26,11 @@ const sag: Ratio = 0.1;
 /** Of the voltage that the load holds: with less, the module gives nothing to hold. */
 const gone: Ratio = 0.5;
 
+/** Of what the bench allows, for a point that is to tell what lower ones will take. */
+const safely: Ratio = 0.95;
+/** Of the last voltage; one closer to it would tell nothing new. */
+const closest: Ratio = 0.97;
+
 /** What flowed at a voltage. */
 interface Traced {
   readonly voltage: Volts;
@@ -46,6 +51,7 @@ export class Trace {
   readonly #points: Points;
   readonly #openCircuit: Volts;
   readonly #traced: Traced[] = [];
+  #on = false;
 
   constructor(parameters: TraceParameters, context: StepContext) {
     this.#parameters = parameters;
@@ -72,42 +78,60 @@ export class Trace {
   }
 
   async #down(): Promise<void> {
-    const { from, to, points, rest } = this.#parameters;
-    const { load } = this.#context.bench;
-    const { clock, signal } = this.#context;
-    let on = false;
+    const { from, to, points } = this.#parameters;
     for (let index = 0; index < points; index += 1) {
       const share = index / (points - 1);
       const voltage = share === 1 ? to : from + (to - from) * share;
-      const expected = currentAhead(this.#traced, voltage);
-      if (expected > this.#context.limits.current.value) {
-        this.#note(
-          `at ${formatQuantity(voltage, 'voltage', { significant: 3 })} the module would give about ` +
-            `${formatQuantity(expected, 'current', { significant: 3 })}, more than the bench allows; the trace ends here`,
-        );
-        return;
-      }
-      // Before the input is on: what was set before may be anything, and 0 V would short the module.
-      await load.setVoltage(voltage);
-      if (!on) await load.inputOn();
-      on = true;
-      const seen = await this.#look(voltage);
-      if (seen.load === 'let-go') {
-        this.#note('the load holds no voltage at this module; the trace ends here');
-        await this.#comeBack();
-        return;
-      }
-      if (isGone(seen, voltage)) {
-        if ((await this.#comeBack()) !== 'came-back') return;
-        on = false;
-      } else {
-        this.#traced.push({ voltage, current: seen.current.maximum });
-      }
-      if (rest === 0) continue;
-      if (on) await load.inputOff();
-      on = false;
-      await clock.sleep(rest, signal);
+      if (!(await this.#mayGoTo(voltage)) || !(await this.#point(voltage))) return;
     }
+  }
+
+  /** One point, and the rest after it; whether there is more to trace. */
+  async #point(voltage: Volts): Promise<boolean> {
+    const { clock, signal, bench } = this.#context;
+    const { rest } = this.#parameters;
+    // Before the input is on: what was set before may be anything, and 0 V would short the module.
+    await bench.load.setVoltage(voltage);
+    if (!this.#on) await bench.load.inputOn();
+    this.#on = true;
+    const seen = await this.#look(voltage);
+    if (seen.load === 'let-go') {
+      this.#note('the load holds no voltage at this module; the trace ends here');
+      await this.#comeBack();
+      return false;
+    }
+    if (isGone(seen, voltage)) {
+      if ((await this.#comeBack()) !== 'came-back') return false;
+      this.#on = false;
+    } else {
+      this.#traced.push({ voltage, current: seen.current.maximum });
+    }
+    if (rest === 0) return true;
+    if (this.#on) await bench.load.inputOff();
+    this.#on = false;
+    await clock.sleep(rest, signal);
+    return true;
+  }
+
+  /**
+   * Whether the module is expected to stay within what the bench allows. After one point alone its limit may
+   * be anything up to a constant power, and a point between tells more.
+   */
+  async #mayGoTo(voltage: Volts): Promise<boolean> {
+    const allowed = this.#context.limits.current.value;
+    const last = this.#traced.at(-1);
+    if (last === undefined || currentAhead(this.#traced, voltage) <= allowed) return true;
+    const between = (last.current * last.voltage) / (safely * allowed);
+    if (this.#traced.length === 1 && between < closest * last.voltage) {
+      if (!(await this.#point(between))) return false;
+    }
+    const expected = currentAhead(this.#traced, voltage);
+    if (expected <= allowed) return true;
+    this.#note(
+      `at ${formatQuantity(voltage, 'voltage', { significant: 3 })} the module would give about ` +
+        `${formatQuantity(expected, 'current', { significant: 3 })}, more than the bench allows; the trace ends here`,
+    );
+    return false;
   }
 
   /** A point ends by the clock: a slow meter takes fewer readings, not a longer point. */

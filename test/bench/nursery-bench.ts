@@ -2,7 +2,7 @@ import { fileURLToPath } from 'node:url';
 import type { InputListener } from '../../src/bench/load.js';
 import { type OpenBench, openBench } from '../../src/bench/open-bench.js';
 import { VirtualClock } from '../../src/clock/virtual-clock.js';
-import type { Bench } from '../../src/files/bench.js';
+import { type Bench, driverAt, type Post } from '../../src/files/bench.js';
 import type { Driver } from '../../src/files/driver.js';
 import { readBench } from '../../src/files/read-bench.js';
 import { readDriver } from '../../src/files/read-driver.js';
@@ -32,7 +32,7 @@ export interface NurseryChange {
 
 export interface Nursery {
   readonly description: Bench;
-  readonly drivers: { readonly load: Driver; readonly meter: Driver };
+  readonly drivers: { readonly load: Driver; readonly meter: Driver; readonly thermometer?: Driver };
   readonly clock: VirtualClock;
   readonly simulation: OpenedSimulation;
   /** Every line to an instrument that was opened, oldest first. */
@@ -49,8 +49,18 @@ export async function nursery(change: NurseryChange = {}): Promise<Nursery> {
   const shippedLoad = await readDriver(instruments.load.driver, shelves);
   const shippedMeter = await readDriver(instruments.meter?.driver ?? '', shelves);
   // What stands there speaks as the shipped drivers say; a changed driver is how we speak to it.
-  const there = { load: shippedLoad.value, meter: shippedMeter.value };
-  const drivers = { load: { ...there.load, ...change.load }, meter: { ...there.meter, ...change.meter } };
+  const thermometer =
+    instruments.thermometer && (await readDriver(instruments.thermometer.driver, shelves)).value;
+  const there = {
+    load: shippedLoad.value,
+    meter: shippedMeter.value,
+    ...(thermometer === undefined ? {} : { thermometer }),
+  };
+  const drivers = {
+    ...there,
+    load: { ...there.load, ...change.load },
+    meter: { ...there.meter, ...change.meter },
+  };
   const clock = new VirtualClock(new Date('2026-11-20T09:00:00Z'));
   const opened = openSimulation({ simulation, clock, drivers: there });
   const lines: Connection[] = [];
@@ -69,7 +79,7 @@ export async function nursery(change: NurseryChange = {}): Promise<Nursery> {
           const line =
             role === 'meter' && change.meterReads !== undefined
               ? stubborn(clock, change.meterReads)
-              : opened.connect(role, role === 'load' ? there.load : there.meter);
+              : opened.connect(role, driverAt(there, role as Post) ?? there.meter);
           lines.push(line);
           return Promise.resolve(line);
         },

@@ -19,6 +19,28 @@ describe('the load ramp', () => {
     expect(simulation.world.load).toMatchObject({ input: 'off', setCurrent: 0 });
   });
 
+  it('goes back down through the same points where asked, the highest taken twice', async () => {
+    const { perform, the, simulation } = await stage();
+    await perform('load-ramp', { to: '4 A', points: 3, dwell: '100 ms', readings: 2, back: true });
+    expect(the('point-began').map(({ set, phase }) => [phase, set.current])).toEqual([
+      ['ramp', 0],
+      ['ramp', 2],
+      ['ramp', 4],
+      ['down', 4],
+      ['down', 2],
+      ['down', 0],
+    ]);
+    expect(the('input').map(({ state }) => state)).toEqual(['on', 'off']);
+    expect(simulation.world.load).toMatchObject({ input: 'off', setCurrent: 0 });
+  });
+
+  it('does not go back down where the module gave up', async () => {
+    const { perform, the, tried } = await stage();
+    await perform('load-ramp', { from: '5 A', to: '7 A', points: 3, readings: 2, back: true });
+    expect(the('point-began').map(({ phase }) => phase)).not.toContain('down');
+    expect(tried).toEqual({ held: 5, dropped: 6 });
+  });
+
   it.each(['nursery', 'nursery-foldback', 'nursery-constant-current', 'nursery-latch-off'])(
     'ends where the module of the bench %s gives up, says so, and unloads it',
     async (file) => {

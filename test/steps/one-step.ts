@@ -4,7 +4,7 @@ import type { Module } from '../../src/files/module.js';
 import type { JournalEvent } from '../../src/record/journal-event.js';
 import { stepKinds } from '../../src/steps/index.js';
 import type { Operator } from '../../src/steps/operator.js';
-import type { Known, Progress } from '../../src/steps/step-kind.js';
+import type { Known, Progress, Tried } from '../../src/steps/step-kind.js';
 import { type Nursery, nursery, type NurseryChange } from '../bench/nursery-bench.js';
 
 export const k1: Module = {
@@ -31,6 +31,7 @@ export interface Stage extends Nursery {
   /** All that was journalled, with the bench's time. */
   readonly events: Timed[];
   readonly known: Known;
+  readonly tried: Tried;
   readonly shown: Progress[];
   /** Does one step with the parameters as a procedure file writes them. */
   readonly perform: (kind: string, parameters?: Readonly<Record<string, unknown>>) => Promise<void>;
@@ -66,7 +67,9 @@ export async function stage(change: StageChange = {}): Promise<Stage> {
   const bench = await place.open();
   await bench.load.prepare();
   const known: Known = { 'rated-voltage': 15, 'rated-current': 4, ...change.known };
-  const limits: GuardLimits = { ...bench.ceilings, ratedVoltage: 15 };
+  const { temperature } = bench.description.limits;
+  const limits: GuardLimits = { ...bench.ceilings, ratedVoltage: 15, temperature };
+  const tried: Tried = {};
   const shown: Progress[] = [];
   const operator = typeof change.operator === 'function' ? change.operator(place) : change.operator;
   return {
@@ -74,6 +77,7 @@ export async function stage(change: StageChange = {}): Promise<Stage> {
     bench,
     events,
     known,
+    tried,
     shown,
     async perform(name, parameters = {}) {
       const kind = stepKinds.find((one) => one.kind === name);
@@ -88,7 +92,7 @@ export async function stage(change: StageChange = {}): Promise<Stage> {
         signal: change.signal ?? new AbortController().signal,
         operator: operator ?? nobody,
         known,
-        tried: {},
+        tried,
         earths: new Map(),
         show: (progress) => shown.push(progress),
       });

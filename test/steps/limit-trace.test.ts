@@ -1,0 +1,175 @@
+import { describe, expect, it } from 'vitest';
+import { simulatedOperator } from '../../src/cli/simulated-operator.js';
+import { exactInstruments } from '../bench/nursery-bench.js';
+import { stage, type Stage, type StageChange } from './one-step.js';
+
+const exact: StageChange = {
+  simulation: { instruments: exactInstruments },
+  known: { 'open-circuit-voltage': 15.21 },
+};
+
+/** The voltages that were held, and the mean of the currents read there. */
+function traceOf({ the }: Stage): readonly { readonly volts: number; readonly amps: number }[] {
+  return the('point-began')
+    .filter(({ phase }) => phase === 'trace')
+    .map(({ point, set }) => {
+      const currents = the('reading').filter((one) => one.point === point && one.what === 'current');
+      const amps = currents.reduce((sum, { value }) => sum + (value ?? Number.NaN), 0) / currents.length;
+      return { volts: set.voltage ?? Number.NaN, amps };
+    });
+}
+
+const atRest = { input: 'off', mode: 'current', setCurrent: 0 };
+
+describe('the trace of a limit', () => {
+  it('goes down evenly from just below open circuit to the least voltage of the load', async () => {
+    const there = await stage({ ...exact, file: 'nursery-constant-current' });
+    await there.perform('limit-trace', { points: 5 });
+    const trace = traceOf(there);
+    expect(trace.map(({ volts }) => volts)).toEqual(
+      [14.9058, 11.4294, 7.9529, 4.4765, 1].map((volts) => expect.closeTo(volts, 3) as number),
+    );
+    expect(trace.at(-1)?.volts).toBe(1);
+    for (const { amps } of trace) expect(amps).toBeCloseTo(5.28, 1);
+    expect(there.simulation.world.load).toMatchObject(atRest);
+  });
+
+  it('does not lock a folding-back module up, which a constant-current load would', async () => {
+    const there = await stage({ ...exact, file: 'nursery-foldback' });
+    await there.perform('limit-trace', { points: 8 });
+    const amps = traceOf(there).map((point) => point.amps);
+    for (const [index, current] of amps.entries()) {
+      if (index > 0) expect(current).toBeLessThan(amps[index - 1] ?? 0);
+    }
+    // On the line from 5.3 A at its knee to 1.2 A into a short, a little less for its warmth.
+    expect(amps.at(-1)).toBeCloseTo(1.2 + ((5.3 - 1.2) * 1.05) / 15.11, 1);
+    expect(there.the('recovery')).toEqual([]);
+  });
+
+  it('watches each point long enough to see a module try again', async () => {
+    const there = await stage(exact);
+    await there.perform('limit-trace', { points: 3 });
+    for (const { point } of there.the('point-began').filter(({ phase }) => phase === 'trace')) {
+      const currents = there
+        .the('reading')
+        .filter((one) => one.point === point && one.what === 'current')
+        .map(({ value }) => value ?? 0);
+      expect(Math.max(...currents)).toBeGreaterThan(5);
+      expect(Math.min(...currents)).toBeLessThan(0.1);
+    }
+  });
+
+  it('is no longer with a slow meter, only sparser', async () => {
+    const there = await stage({
+      ...exact,
+      simulation: {
+        instruments: { ...exactInstruments, meter: { errors: {}, readingTime: 0.4 } },
+      },
+    });
+    await there.perform('limit-trace', { points: 2, readings: 2 });
+    const [began] = there.the('point-began').filter(({ phase }) => phase === 'trace');
+    const ended = there.the('point-ended').find(({ point }) => point === began?.point);
+    expect((ended?.t ?? 0) - (began?.t ?? 0)).toBeLessThan(3);
+  });
+
+  it('lets the module rest between two points, and steps down without a pause where none is asked for', async () => {
+    const resting = await stage({ ...exact, file: 'nursery-constant-current' });
+    await resting.perform('limit-trace', { from: '10 V', to: '8 V', points: 3, watch: '0 s' });
+    expect(resting.the('input').map(({ state }) => state)).toEqual([
+      'off',
+      ...['on', 'off', 'on', 'off', 'on', 'off'],
+      'off',
+    ]);
+    const hurrying = await stage({ ...exact, file: 'nursery-constant-current' });
+    await hurrying.perform('limit-trace', { from: '10 V', to: '8 V', points: 3, watch: '0 s', rest: '0 s' });
+    expect(hurrying.the('input').map(({ state }) => state)).toEqual(['off', 'on', 'off']);
+  });
+
+  it('changes the mode, and the voltage from whatever it was, only with the input off', async () => {
+    const seen: string[] = [];
+    const there = await stage({ ...exact, file: 'nursery-constant-current' });
+    there.simulation.world.onStep(() => {
+      const { input, mode, setVoltage } = there.simulation.world.load;
+      seen.push(`${input} ${mode} ${setVoltage > 0 ? 'some' : 'none'}`);
+    });
+    await there.perform('limit-trace', { from: '10 V', to: '8 V', points: 2, watch: '0 s' });
+    expect(seen).not.toContain('on current none');
+    expect(seen).not.toContain('on voltage none');
+    expect(seen.filter((state, index) => state !== seen[index - 1])).toEqual([
+      'off current none',
+      'off voltage none',
+      'off voltage some',
+      'on voltage some',
+      'off voltage some',
+      'on voltage some',
+      'off voltage some',
+      'off current some',
+    ]);
+  });
+
+  it('ends where a module latches off, once its input was cycled', async () => {
+    const there = await stage({
+      ...exact,
+      file: 'nursery-latch-off',
+      operator: (bench) => simulatedOperator(bench.simulation),
+    });
+    await there.perform('limit-trace', { points: 6 });
+    expect(there.the('recovery').map(({ outcome }) => outcome)).toEqual([
+      'stayed-off',
+      'came-back-after-cycling',
+    ]);
+    expect(there.the('notice').at(-1)?.text).toBe('the module has latched off; the trace ends here');
+    expect(traceOf(there).length).toBeLessThan(3);
+    expect(there.simulation.world.load).toMatchObject(atRest);
+  });
+
+  it('ends before a constant-power module would give more than the bench allows', async () => {
+    const there = await stage({ ...exact, file: 'nursery-constant-power' });
+    await there.perform('limit-trace', { points: 20 });
+    const amps = traceOf(there).map((point) => point.amps);
+    expect(Math.max(...amps)).toBeGreaterThan(7);
+    expect(Math.max(...amps)).toBeLessThan(8);
+    expect(there.the('notice').at(-1)?.text).toMatch(
+      /^at 9\.\d\d V the module would give about 8\.\d\d A, more than the bench allows; the trace ends here$/,
+    );
+    expect(there.simulation.world.load).toMatchObject(atRest);
+  });
+
+  it('takes a point between where the next is so far down that a constant power would be too much', async () => {
+    const there = await stage({ ...exact, file: 'nursery-constant-current' });
+    await there.perform('limit-trace', { points: 2, watch: '0 s' });
+    // 14.91 V × 5.3 A at 95 % of 8 A.
+    expect(traceOf(there).map(({ volts }) => volts)).toEqual([
+      expect.closeTo(14.91, 2),
+      expect.closeTo(10.4, 1),
+      1,
+    ]);
+  });
+
+  it('is stopped by the guard of the power, and leaves the load as it was', async () => {
+    const there = await stage({ ...exact, file: 'nursery-constant-current', limits: { power: 60 } });
+    await expect(there.perform('limit-trace')).rejects.toMatchObject({ code: 'GUARD_TRIPPED' });
+    expect(there.simulation.world.load).toMatchObject(atRest);
+  });
+
+  it('is left out for a module that gives no voltage', async () => {
+    const there = await stage({
+      ...exact,
+      simulation: { faults: [{ at: 0, what: 'module-dead' }], instruments: exactInstruments },
+    });
+    await there.perform('limit-trace');
+    expect(traceOf(there)).toEqual([]);
+    expect(there.the('notice').map(({ text }) => text)).toEqual([
+      'the module gives no voltage; this step is left out',
+    ]);
+  });
+
+  it('refuses to go upwards', async () => {
+    const there = await stage(exact);
+    await expect(there.perform('limit-trace', { from: '5 V', to: '6 V' })).rejects.toMatchObject({
+      code: 'TRACE_RISES',
+      message: 'a limit-trace goes downwards, and was asked to go from 5.000 V to 6.000 V',
+    });
+    expect(there.the('input')).toEqual([]);
+  });
+});
