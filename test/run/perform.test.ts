@@ -91,6 +91,66 @@ describe('before anything is energised', () => {
     expectSafeEnd(run);
   });
 
+  it('the wiring is shown, all of it, before the cautions, and acknowledged', async () => {
+    const asked: string[] = [];
+    const run = await rehearse({
+      steps: [idle],
+      cautions: '[mains]',
+      wiring: '[Join the outputs through their ballasts., The load goes across the bus.]',
+      operator: () => ({
+        ...nobody,
+        acknowledge: (caution, text) => {
+          asked.push(`${caution}: ${text}`);
+          return Promise.resolve('operator');
+        },
+      }),
+    });
+    expect(run.ending).toEqual({ how: 'completed' });
+    expect(asked[0]).toBe('wiring: Join the outputs through their ballasts.\nThe load goes across the bus.');
+    expect(asked[1]).toMatch(/^mains: /);
+    expect(run.events.filter(({ event }) => event === 'caution')).toMatchObject([
+      { name: 'wiring', by: 'operator' },
+      { name: 'mains', by: 'operator' },
+    ]);
+  });
+
+  it('a wiring that is not acknowledged ends the run', async () => {
+    const run = await rehearse({
+      steps: [ramp],
+      wiring: '[Join the outputs.]',
+      operator: () => ({ ...nobody, acknowledge: () => Promise.resolve('refused') }),
+    });
+    expect(run.ending).toMatchObject({
+      how: 'stopped',
+      reason: 'the wiring was not acknowledged',
+      error: { exitCode: 3 },
+    });
+    expect(run.inputs).toEqual([]);
+    expect(run.events.filter(({ event }) => event === 'caution' || event === 'step-began')).toEqual([]);
+    expectSafeEnd(run);
+  });
+
+  it('a procedure without wiring asks for none', async () => {
+    const run = await rehearse({ steps: [idle], cautions: '[]' });
+    expect(run.events.filter((event) => event.event === 'caution' && event.name === 'wiring')).toEqual([]);
+  });
+
+  it('a meter that was left in another mode ends the run, named', async () => {
+    const run = await rehearse({
+      steps: [ramp],
+      // Its driver does not set it, and takes it as it is.
+      meter: { prepare: ['*CLS'] },
+      simulation: { faults: [{ at: 0, what: 'meter-wrong-mode' }] },
+    });
+    expect(run.ending).toMatchObject({
+      how: 'stopped',
+      reason: expect.stringMatching(/^the meter at .* says that it does not measure dc voltage$/) as string,
+      error: { code: 'WRONG_PLACE', what: 'meter-in-wrong-mode' },
+    });
+    expect(run.inputs).toEqual([]);
+    expectSafeEnd(run);
+  });
+
   it('an input that is on already ends the run, and ends off', async () => {
     const run = await rehearse({
       steps: [ramp],

@@ -17,7 +17,7 @@ import { type Nursery, nursery, type NurseryChange } from '../bench/nursery-benc
 import { k1 } from '../steps/one-step.js';
 
 /** A procedure with these steps, a line each as a file writes them. */
-export function procedureOf(steps: readonly string[], cautions = '[]') {
+export function procedureOf(steps: readonly string[], cautions = '[]', wiring = '[]') {
   const text = [
     'railproof: procedure 1',
     'name: rehearsal',
@@ -27,6 +27,7 @@ export function procedureOf(steps: readonly string[], cautions = '[]') {
     'steps:',
     ...steps.map((step) => `  - ${step}`),
     'derating: { margin: 80 %, above-nameplate: never }',
+    `wiring: ${wiring}`,
     '',
   ].join('\n');
   return parseProcedure(text, 'rehearsal.yaml', vocabulary);
@@ -35,6 +36,7 @@ export function procedureOf(steps: readonly string[], cautions = '[]') {
 export interface RehearsalChange extends NurseryChange {
   readonly steps: readonly string[];
   readonly cautions?: string;
+  readonly wiring?: string;
   readonly operator?: (bench: Nursery) => Operator;
   readonly signal?: AbortSignal;
   /** Told of each event before it is journalled; what it throws is as if the journal had failed. */
@@ -85,7 +87,7 @@ export async function rehearse(change: RehearsalChange): Promise<Rehearsal> {
   });
   const module = { ...k1, rated: change.rated ?? k1.rated };
   const plan = makePlan(
-    procedureOf(change.steps, change.cautions),
+    procedureOf(change.steps, change.cautions, change.wiring),
     [module],
     place.description,
     place.drivers,
