@@ -4,7 +4,12 @@ import type { LoadState } from '../../src/simulation/virtual-load.js';
 import { type Moment, VirtualBench, type WorldFault } from '../../src/simulation/virtual-bench.js';
 import { k1 } from './bench-parts.js';
 
-export const sinks = (current: number): LoadLaw => ({ kind: 'current', current, leastVoltage: 1, leads: 0.035 });
+export const sinks = (current: number): LoadLaw => ({
+  kind: 'current',
+  current,
+  leastVoltage: 1,
+  leads: 0.035,
+});
 
 /** A 12 V brick of the common kind: about 3.7 A, a milliohm or two of droop. */
 export function brick(
@@ -37,7 +42,8 @@ export function under(
   at: number,
   elapsed = 0.3,
 ): Moment {
-  const load = typeof change === 'number' ? ({ input: 'on', mode: 'current', setCurrent: change } as const) : change;
+  const load =
+    typeof change === 'number' ? ({ input: 'on', mode: 'current', setCurrent: change } as const) : change;
   world.setLoad(load, at);
   return seen(world, at + elapsed);
 }
