@@ -112,7 +112,7 @@ function countLine(results: readonly TrialResult[]): string {
 }
 
 const widthOfVerdict = 11;
-const widthOfName = 16;
+const widthOfName = 19;
 const widthOfSent = 22;
 
 function resultLine({ verdict, name, sent, received, detail, seconds }: TrialResult): string {

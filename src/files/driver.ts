@@ -75,7 +75,8 @@ export const operationsOf = {
     must: ['make-safe', 'input-on', 'input-off', 'current-mode', 'set-current'],
     may: ['voltage-mode', 'set-voltage', 'protect-current', 'protect-voltage'],
   },
-  meter: { must: ['make-safe'], may: ['measure-voltage', 'measure-resistance'] },
+  // Told one after the other, as in a trial, they leave it at dc voltage.
+  meter: { must: ['make-safe'], may: ['measure-resistance', 'measure-voltage'] },
   scanner: { must: ['make-safe', 'close-channel', 'open-all'], may: [] },
   thermometer: { must: [], may: [] },
   source: { must: ['make-safe', 'output-on', 'output-off'], may: ['set-voltage', 'set-current'] },

@@ -64,8 +64,8 @@ export async function performAct(stage: Stage, act: string): Promise<void> {
   }
   const end = act.lastIndexOf(' ');
   const onOne = actsOnOne.get(act.slice(0, Math.max(0, end)));
-  if (onOne === undefined) throw new UnknownActError({ act, known: knownActs });
   const module = act.slice(end + 1);
+  if (onOne === undefined || module === '') throw new UnknownActError({ act, known: knownActs });
   const modules = stage.bench.modules.map(({ name }) => name);
   if (!modules.includes(module)) throw new UnknownModuleError({ module, modules });
   await onOne(stage, module);

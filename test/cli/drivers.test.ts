@@ -1,4 +1,7 @@
-import { describe, expect, it } from 'vitest';
+import { describe, expect, it, onTestFinished } from 'vitest';
+import { realClock } from '../../src/clock/real-clock.js';
+import { serveBench } from '../../src/simulation/serve.js';
+import { groupBench } from '../bench/group-bench.js';
 import { lastLine, loadAtSocket, railproof } from './at-a-socket.js';
 
 const mayBeOn = /^THE LOAD MAY STILL BE ON\. Switch its input off at its front panel/;
@@ -62,3 +65,60 @@ describe('drivers --try', () => {
 function trying({ driver, address }: { readonly driver: string; readonly address: string }): string[] {
   return ['drivers', '--try', driver, '--connection', address];
 }
+
+describe('drivers', () => {
+  it('lists the shipped ones with their roles', async () => {
+    const { status, stdout } = await railproof('drivers');
+    expect(status).toBe(0);
+    expect(stdout).toMatch(/^scanner-route-scpi +scanner +Scanners that close one channel/m);
+    expect(stdout).toMatch(/^thermometer-query-scpi +thermometer +Thermometers that measure/m);
+    const { drivers } = JSON.parse((await railproof('drivers', '--json')).stdout) as { drivers: unknown[] };
+    expect(drivers).toHaveLength(6);
+  });
+});
+
+describe('drivers --try on instruments other than a load', () => {
+  const tried = async (post: 'meter' | 'scanner' | 'thermometer' | 'meter-1', name: string) => {
+    const { description, drivers } = await groupBench({
+      measuredBy: post === 'meter-1' ? 'meters' : 'scanner',
+    });
+    const served = await serveBench({ bench: description, drivers, clock: realClock });
+    onTestFinished(() => served.close());
+    return railproof('drivers', '--try', name, '--connection', served.addresses[post] ?? '');
+  };
+
+  it('opens all channels of a scanner, connects none, and says which is closed', async () => {
+    const { status, stdout, stderr } = await tried('scanner', 'scanner-route-scpi');
+    expect(stdout).toMatch(/^understood +make-safe +ROUT:OPEN:ALL /m);
+    expect(stdout).toMatch(/^not-sent +close-channel +ROUT:CLOS \(@\{channel\}\) +would connect something$/m);
+    expect(stdout).toMatch(/^understood +closed-channel +ROUT:CLOS:STAT\? +\d+ ms → \(@\) {2}none$/m);
+    expect(stdout.trimEnd().split('\n').at(-2)).toMatch(/^understood +make-safe +ROUT:OPEN:ALL/);
+    expect(stderr).not.toMatch(/load/i);
+    expect(status).toBe(0);
+  });
+
+  it('reads a thermometer, which nothing can make safer', async () => {
+    const { status, stdout, stderr } = await tried('thermometer', 'thermometer-query-scpi');
+    expect(stdout).toMatch(/^understood +temperature +MEAS:TEMP\? +\d+ ms → \+2\.30\d+E\+01 {2}23/m);
+    expect(lastLine(stdout)).toBe('4 of 4 messages understood');
+    expect(stderr).not.toMatch(/load/i);
+    expect(status).toBe(0);
+  });
+
+  it('goes through both modes of a meter, and leaves it at dc voltage', async () => {
+    const { status, stdout } = await tried('meter', 'meter-read-scpi');
+    expect(stdout).toMatch(/^understood +measure-resistance +CONF:RES /m);
+    expect(stdout).toMatch(/^understood +measures-voltage +CONF\? +\d+ ms → "VOLT .*" {2}yes$/m);
+    expect(stdout).toMatch(/^understood +measures-resistance +CONF\? +\d+ ms → "VOLT .*" {2}no$/m);
+    const last = stdout.trimEnd().split('\n').slice(-3, -1);
+    expect(last[0]).toMatch(/^understood +measure-voltage +CONF:VOLT:DC/);
+    expect(last[1]).toMatch(/^understood +make-safe/);
+    expect(status).toBe(0);
+  });
+
+  it('asks a meter that sets itself', async () => {
+    const { status, stdout } = await tried('meter-1', 'meter-query-scpi');
+    expect(stdout).toMatch(/^understood +resistance +MEAS:RES\? +\d+ ms → \+\d\.\d+E[+-]\d+/m);
+    expect(status).toBe(0);
+  });
+});

@@ -1,8 +1,9 @@
 import { once } from 'node:events';
-import { rmSync } from 'node:fs';
+import { readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { createServer, type AddressInfo } from 'node:net';
 import { dirname } from 'node:path';
 import { describe, expect, it } from 'vitest';
+import { serveTcp } from '../instrument/fixtures/serve-tcp.js';
 import { benchFile, lastLine, loadAtSocket, railproof } from './at-a-socket.js';
 
 const mayBeOn =
@@ -35,6 +36,27 @@ describe('safe', () => {
     const { status } = await railproof('safe', '--bench', load.bench);
     expect(load.state.input).toBe('0');
     expect(status).toBe(0);
+  });
+
+  it('leaves the other instruments alone: a scanner that is gone, and one that stays as it is', async () => {
+    const load = await loadAtSocket();
+    const heard: string[] = [];
+    const { port } = await serveTcp((message) => {
+      heard.push(message);
+    });
+    const text = readFileSync(load.bench, 'utf8')
+      .replace(
+        'instruments:\n',
+        `instruments:\n  scanner: { driver: scanner-route-scpi, connection: "tcp://127.0.0.1:${port}" }\n` +
+          '  meter: { driver: meter-read-scpi, connection: "tcp://127.0.0.1:1" }\n',
+      )
+      .concat('group: { measured-by: scanner, places: [{ channel: 101 }, { channel: 102 }] }\n');
+    writeFileSync(load.bench, text);
+    const { status, stdout, stderr } = await railproof('safe', '--bench', load.bench);
+    expect(stderr).toBe('');
+    expect(stdout).toBe(`The load at ${load.address} is off; it was read back.\n`);
+    expect(status).toBe(0);
+    expect(heard).toEqual([]);
   });
 
   it('comes back when the first connection is lost', async () => {

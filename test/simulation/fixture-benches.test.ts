@@ -59,6 +59,8 @@ describe('the benches that come with the project', () => {
     ['load-short-scpi', 'short-load'],
     ['meter-read-scpi', 'configured-meter'],
     ['meter-query-scpi', 'query-meter'],
+    ['scanner-route-scpi', 'routed-scanner'],
+    ['thermometer-query-scpi', 'query-thermometer'],
   ])('the shipped driver %s is understood by %s', async (driver, dialect) => {
     const { value } = await readDriver(driver, shelves);
     expect(dialectFor(value).name).toBe(dialect);

@@ -9,6 +9,7 @@ import type { Bench } from '../../src/files/bench.js';
 import type { Simulation } from '../../src/files/simulation-section.js';
 import { type ServedBench, type ServeOptions, serveBench } from '../../src/simulation/serve.js';
 import { CannotServeError, CannotSimulateError } from '../../src/simulation/simulation-errors.js';
+import { groupBench } from '../bench/group-bench.js';
 import { hiccup, k1, loadDriver, meterDriver, simulationOf } from './bench-parts.js';
 
 const socatIsMissing = spawnSync('socat', ['-V']).error !== undefined;
@@ -155,6 +156,34 @@ describe('a bench served on TCP', () => {
     await expect(dial(addresses.load)).rejects.toThrow('ECONNREFUSED');
   });
 
+  it('shows a group through the sockets of a scanner, its meters and a thermometer', async () => {
+    const { description, drivers } = await groupBench({ measuredBy: 'meters' });
+    const { addresses } = await serve({ bench: description, drivers });
+    expect(Object.keys(addresses)).toEqual(['load', 'meter', 'thermometer', 'meter-1', 'meter-2', 'meter-3']);
+    const [load, third, thermometer] = await Promise.all([
+      dial(addresses.load),
+      dial(addresses['meter-3']),
+      dial(addresses.thermometer),
+    ]);
+    expect(await ask(third, '*IDN?')).toBe('railproof,simulated meter,K-bench,4');
+    load.write('CURR 6;INP ON\n');
+    expect(await ask(load, '*OPC?')).toBe('1');
+    await realClock.sleep(0.1);
+    expect(Number(await ask(third, 'MEAS:VOLT?'))).toBeCloseTo(0.05 * (2 - 0.04 / 0.068), 3);
+    expect(Number(await ask(thermometer, 'MEAS:TEMP?'))).toBeCloseTo(23, 6);
+    for (const socket of [load, third, thermometer]) socket.destroy();
+
+    const scanned = await groupBench();
+    await served?.close();
+    const again = await serve({ bench: scanned.description, drivers: scanned.drivers });
+    const [scanner, meter] = await Promise.all([dial(again.addresses.scanner), dial(again.addresses.meter)]);
+    expect(Math.abs(Number(await ask(meter, 'READ?')))).toBeLessThan(0.02);
+    scanner.write('ROUT:OPEN:ALL;:ROUT:CLOS (@110)\n');
+    expect(await ask(scanner, 'ROUT:CLOS:STAT?')).toBe('(@110)');
+    expect(Number(await ask(meter, 'READ?'))).toBeCloseTo(12.34, 3);
+    for (const socket of [scanner, meter]) socket.destroy();
+  });
+
   it('needs a simulation section', async () => {
     await expect(serve({ bench: benchOf() })).rejects.toThrow(CannotSimulateError);
   });
@@ -195,6 +224,20 @@ describe.skipIf(socatIsMissing && process.env['CI'] === undefined)('a bench serv
     await shut(meter);
     await bench.close();
     expect(existsSync(/^serial:(.*)\?/.exec(addresses.load ?? '')?.[1] ?? '/')).toBe(false);
+  });
+
+  it('has a port for the scanner and the thermometer too', async () => {
+    const { description, drivers } = await groupBench();
+    const { addresses } = await serve({ bench: description, drivers, lines: 'pty' });
+    expect(Object.keys(addresses)).toEqual(['load', 'meter', 'scanner', 'thermometer']);
+    const scanner = await open(addresses.scanner);
+    scanner.write('ROUT:OPEN:ALL\nROUT:CLOS (@110)\n');
+    expect(await ask(scanner, 'ROUT:CLOS:STAT?')).toBe('(@110)');
+    const meter = await open(addresses.meter);
+    expect(Number(await ask(meter, 'READ?'))).toBeCloseTo(12.34, 3);
+    const thermometer = await open(addresses.thermometer);
+    expect(Number(await ask(thermometer, 'MEAS:TEMP?'))).toBeCloseTo(23, 6);
+    for (const port of [scanner, meter, thermometer]) await shut(port);
   });
 });
 
