@@ -23,18 +23,19 @@ export interface TimeConstant {
   readonly degreesOfFreedom: number;
 }
 
-/**
- * Parts of the points that are left out at the beginning, one after the other, where the whole is no settling: a
- * probe on a case lags behind what warms inside, and the curve begins flat.
- */
+/** Parts of the points that are left out at the beginning, one after the other. */
 const leftOut: readonly Ratio[] = [0, 0.25, 0.5];
 
 /**
  * The temperature that a soak goes to, T(t) = T∞ + (T₀ − T∞)·exp(−t/τ), predicted where it was cut short;
  * undefined where the points do not tell: too few, still straight, or too little watched to call it
- * settled. Readings of a digital thermometer that changes slowly hang together; the uncertainties are
- * widened by √((1 + r)/(1 − r)), r being the correlation of neighbouring residuals (the usual correction
- * for a first-order dependence; from memory).
+ * settled.
+ *
+ * A probe on a case lags behind what warms inside, and its curve begins flat. So where the whole is no
+ * settling, or its residuals hang together more than chance lets them, the beginning is left out: the lag
+ * has died away in the rest. What still hangs together (a thermometer of few digits that changes slowly)
+ * widens the uncertainties by √((1 + r)/(1 − r)), r being the correlation of neighbouring residuals (the
+ * usual correction for a first-order dependence; from memory).
  * @param enough the time that must have been watched for no change to mean anything.
  */
 export function settledTemperature(
@@ -42,26 +43,38 @@ export function settledTemperature(
   temperatures: readonly Celsius[],
   enough: Seconds,
 ): SettledTemperature | undefined {
+  let best: Curve | undefined;
   for (const part of leftOut) {
     const first = Math.floor(times.length * part);
     const t = times.slice(first);
     const y = temperatures.slice(first);
     const outcome = fitSettling(t, y, { startTime: t[0] ?? 0 });
-    if (outcome.kind === 'settling') return fromCurve(t, y, outcome);
+    if (outcome.kind === 'settling') {
+      const closer = best === undefined || outcome.residualCorrelation < best.fit.residualCorrelation;
+      if (closer) best = { t, y, fit: outcome };
+      if (outcome.residualCorrelation <= byChance / Math.sqrt(outcome.points)) break;
+      continue;
+    }
+    if (best !== undefined) break;
     if (outcome.kind === 'already-settled') {
       const watched = (t.at(-1) ?? 0) - (t[0] ?? 0);
       return watched < enough ? undefined : fromMean(outcome);
     }
     if (outcome.why === 'straight' || outcome.why === 'too-few-points') return undefined;
   }
-  return undefined;
+  return best === undefined ? undefined : fromCurve(best);
 }
 
-function fromCurve(
-  t: readonly Seconds[],
-  y: readonly Celsius[],
-  fit: SettlingFit,
-): SettledTemperature | undefined {
+/** Standard deviations of the correlation of residuals that do not hang together, 1/√n. */
+const byChance = 2;
+
+interface Curve {
+  readonly t: readonly Seconds[];
+  readonly y: readonly Celsius[];
+  readonly fit: SettlingFit;
+}
+
+function fromCurve({ t, y, fit }: Curve): SettledTemperature | undefined {
   const [low, high] = settledInterval(t, y, fit);
   if (!Number.isFinite(low) || !Number.isFinite(high)) return undefined;
   const wider = dependence(fit.residualCorrelation);
