@@ -180,12 +180,17 @@ describe('what cannot be simulated', () => {
   const clock = new VirtualClock(new Date(0));
   const drivers = { load: loadDriver, meter: meterDriver };
 
-  it('is refused by name: several modules, or none', () => {
+  it('is refused by name: two modules of one name, none, or one of several the wrong way round', () => {
     const group = simulationOf(k1(hiccup), { circuit: 'parallel', modules: [k1(hiccup), k1(hiccup)] });
     expect(() => openSimulation({ simulation: group, clock, drivers })).toThrow(CannotSimulateError);
     const none = { ...simulationOf(k1(hiccup)), modules: [] };
     expect(() => openSimulation({ simulation: none, clock, drivers })).toThrow(
       'cannot simulate a single circuit of 0 modules',
+    );
+    const faults = [{ at: 1, what: 'reversed', of: 'K2' }] as const;
+    const crossed = { ...group, modules: [k1(hiccup), k1(hiccup, { name: 'K2' })], faults };
+    expect(() => openSimulation({ simulation: crossed, clock, drivers })).toThrow(
+      'cannot simulate one module of several that is wired the wrong way round',
     );
   });
 

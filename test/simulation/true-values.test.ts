@@ -32,5 +32,7 @@ describe('the true values', () => {
     expect(warm.dropoutCurrent(0.05)).toBeCloseTo(5.3 * 0.98, 9);
     expect(warm.unsteadyAboveCurrent).toBeCloseTo(5.1 * 0.98, 9);
     expect(warm.leadResistance).toBe(0.035);
+    // As the square of the current: (2/3.975)² of the rise at three quarters of the limit.
+    expect(warm.settledRise(2)).toBeCloseTo(35 * (2 / 3.975) ** 2, 9);
   });
 });
