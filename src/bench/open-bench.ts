@@ -7,6 +7,7 @@ import { Audience } from './audience.js';
 import { type Ceilings, ceilingsOf } from './ceilings.js';
 import { sayWhatIsOn } from './found-on.js';
 import { type InputListener, Load } from './load.js';
+import { checkAgainstLoad } from './meter-against-load.js';
 import { MeterPlaces } from './meter-places.js';
 import type { SampleWanted, Taken } from './sample.js';
 
@@ -35,6 +36,7 @@ export interface OpenBench {
   /**
    * Reads everything there is to read at one moment; `each` is told of every value as it comes, the load's
    * current last.
+   * @throws WrongPlaceError, when a meter does not read what it should
    */
   sample(each: (taken: Taken) => void, wanted?: SampleWanted): Promise<readonly Taken[]>;
   /**
@@ -100,6 +102,11 @@ function assemble(
     { post: 'load', instrument: load.instrument },
     ...others,
   ];
+  const lookAgain = async (): Promise<readonly Taken[]> => {
+    const seen: Taken[] = [];
+    await places.read([], (one) => seen.push(one));
+    return [...seen, { of: 'load', what: 'voltage', measurement: await load.readVoltage() }];
+  };
   const regardless = <T>(work: () => Promise<T>): Promise<T> => audience.regardless(work);
   return {
     description: parts.bench,
@@ -113,7 +120,7 @@ function assemble(
     get instruments() {
       return instruments();
     },
-    async sample(each, { taps = [], temperature = false } = {}) {
+    async sample(each, { taps = [], temperature = false, compared = true } = {}) {
       const taken: Taken[] = [];
       const take = (one: Taken): void => {
         each(one);
@@ -125,6 +132,7 @@ function assemble(
       }
       take({ of: 'load', what: 'voltage', measurement: await load.readVoltage() });
       take({ of: 'load', what: 'current', measurement: await load.readCurrent() });
+      if (compared) await checkAgainstLoad(parts.bench, taken, lookAgain);
       return taken;
     },
     async reopenLoad(pause) {

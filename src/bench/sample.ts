@@ -16,6 +16,8 @@ export interface SampleWanted {
   readonly taps?: readonly Tap[];
   /** Of the module, where the bench has a thermometer. */
   readonly temperature?: boolean;
+  /** Whether what the meter reads is compared with what the load has; it is when left out. */
+  readonly compared?: boolean;
 }
 
 /** A place of the circuit at which a meter's probes can be. */

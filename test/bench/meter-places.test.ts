@@ -110,7 +110,21 @@ describe('a scanner', () => {
     });
   });
 
-  it('that says what it was told, and does not do it, reads one place for all', async () => {
+  it('that says what it was told, and sticks at a ballast, is noticed by what the load has', async () => {
+    const { read, clock } = await loaded({ faults: [{ at: 3, what: 'scanner-stuck-unnoticed' }] });
+    await read();
+    await clock.sleep(3);
+    await expect(read()).rejects.toMatchObject({
+      code: 'WRONG_PLACE',
+      exitCode: 3,
+      what: 'probes-elsewhere',
+      message: expect.stringMatching(
+        /^the meter reads \d+\.\d+ mV where the load has 1[12]\.\d+ V at its /,
+      ) as string,
+    });
+  });
+
+  it('that says what it was told, and sticks at the output, reads that for all', async () => {
     const { read } = await loaded({ faults: [{ at: 0, what: 'scanner-stuck-unnoticed' }] });
     const taken = await read();
     expect(taken.get('ballast-of-K1')).toBeCloseTo(bus, 3);
