@@ -27,6 +27,9 @@ export const limitTrace = defineStep({
       "the last and lowest point, at the load; the load's least voltage when left out",
       { least: 0 },
     ).exactOptional(),
+    ceiling: quantityOrShare('current', 'the trace ends before the module gives more than this', {
+      above: 0,
+    }).prefault('200 % of rated-current'),
     points: count('how many points, both ends included', { least: 2, most: 1000 }).default(12),
     dwell: quantity('time', 'settling before the first reading of a point', {
       least: 0,
@@ -52,7 +55,7 @@ export const limitTrace = defineStep({
     operator: 'never',
     operations: { load: ['voltage-mode', 'set-voltage'] },
   },
-  references: ({ from, to }) => ({ from, ...(to === undefined ? {} : { to }) }),
+  references: ({ from, to, ceiling }) => ({ from, ceiling, ...(to === undefined ? {} : { to }) }),
   currents: [],
   describe: ({ points, from, to, watch }) =>
     `${points} points from ${formatShare(from, 'voltage')} down to ` +
@@ -66,6 +69,6 @@ export const limitTrace = defineStep({
     const from = resolve(given.from, known);
     const to = given.to === undefined ? Math.min(leastVoltage, from) : resolve(given.to, known);
     if (to > from) throw new TraceRisesError(from, to);
-    await new Trace({ ...given, from, to }, context).run();
+    await new Trace({ ...given, from, to, ceiling: resolve(given.ceiling, known) }, context).run();
   },
 });

@@ -7,10 +7,11 @@ import { Points, type PointSeen } from './point.js';
 import { comeBack } from './recover.js';
 import type { StepContext } from './step-kind.js';
 
-/** All in volts and seconds; what each means stands in the step's schema. */
+/** All in volts, amperes and seconds; what each means stands in the step's schema. */
 export interface TraceParameters {
   readonly from: Volts;
   readonly to: Volts;
+  readonly ceiling: Amperes;
   readonly points: number;
   readonly dwell: Seconds;
   readonly readings: number;
@@ -26,10 +27,12 @@ const sag: Ratio = 0.1;
 /** Of the voltage that the load holds: with less, the module gives nothing to hold. */
 const gone: Ratio = 0.5;
 
-/** Of what the bench allows, for a point that is to tell what lower ones will take. */
+/** Of what is allowed, for a point that is to tell what lower ones will take. */
 const safely: Ratio = 0.95;
-/** Of the last voltage; one closer to it would tell nothing new. */
-const closest: Ratio = 0.97;
+/** Of what is allowed; closer to it a further point would tell nothing new. */
+const leastRoom: Ratio = 0.05;
+/** Points between two, at most. */
+const mostExtra = 5;
 
 /** What flowed at a voltage. */
 interface Traced {
@@ -43,7 +46,7 @@ interface Traced {
  * at a given voltage it can only be where its curve is.
  *
  * What a constant voltage draws is the module's doing. The guards stay on, and before each point it is
- * reckoned whether it may exceed what the bench allows.
+ * reckoned whether it may exceed what the step and the bench allow.
  */
 export class Trace {
   readonly #parameters: TraceParameters;
@@ -51,6 +54,7 @@ export class Trace {
   readonly #points: Points;
   readonly #openCircuit: Volts;
   readonly #traced: Traced[] = [];
+  readonly #allowed: Amperes;
   #on = false;
 
   constructor(parameters: TraceParameters, context: StepContext) {
@@ -58,6 +62,7 @@ export class Trace {
     this.#context = context;
     this.#points = new Points(context);
     this.#openCircuit = openCircuitVoltage(context);
+    this.#allowed = Math.min(parameters.ceiling, context.limits.current.value);
   }
 
   /** Whatever happens, the load is told to end as it began: input off, constant current, 0 A. */
@@ -105,6 +110,10 @@ export class Trace {
       this.#on = false;
     } else {
       this.#traced.push({ voltage, current: seen.current.maximum });
+      if (seen.current.maximum > this.#allowed) {
+        this.#note('the module gives more than is allowed; the trace ends here');
+        return false;
+      }
     }
     if (rest === 0) return true;
     if (this.#on) await bench.load.inputOff();
@@ -114,24 +123,27 @@ export class Trace {
   }
 
   /**
-   * Whether the module is expected to stay within what the bench allows. After one point alone its limit may
-   * be anything up to a constant power, and a point between tells more.
+   * Whether the module is expected to stay within what is allowed. Where it is not, points between tell how its
+   * current really goes on: in regulation it grows steeply, and at its limit no more.
    */
   async #mayGoTo(voltage: Volts): Promise<boolean> {
-    const allowed = this.#context.limits.current.value;
-    const last = this.#traced.at(-1);
-    if (last === undefined || currentAhead(this.#traced, voltage) <= allowed) return true;
-    const between = (last.current * last.voltage) / (safely * allowed);
-    if (this.#traced.length === 1 && between < closest * last.voltage) {
-      if (!(await this.#point(between))) return false;
+    for (let extra = 0; ; extra += 1) {
+      const last = this.#traced.at(-1);
+      if (last === undefined) return true;
+      const before = this.#traced.at(-2) ?? { voltage: this.#openCircuit, current: 0 };
+      const ahead = currentAhead(before, last);
+      const expected = ahead.at(voltage);
+      if (expected <= this.#allowed) return true;
+      const room = safely * this.#allowed - last.current;
+      if (extra === mostExtra || room < leastRoom * this.#allowed) {
+        this.#note(
+          `at ${formatQuantity(voltage, 'voltage', { significant: 3 })} the module would give about ` +
+            `${formatQuantity(expected, 'current', { significant: 3 })}, more than is allowed; the trace ends here`,
+        );
+        return false;
+      }
+      if (!(await this.#point(ahead.whereIs(safely * this.#allowed)))) return false;
     }
-    const expected = currentAhead(this.#traced, voltage);
-    if (expected <= allowed) return true;
-    this.#note(
-      `at ${formatQuantity(voltage, 'voltage', { significant: 3 })} the module would give about ` +
-        `${formatQuantity(expected, 'current', { significant: 3 })}, more than the bench allows; the trace ends here`,
-    );
-    return false;
   }
 
   /** A point ends by the clock: a slow meter takes fewer readings, not a longer point. */
@@ -174,16 +186,13 @@ function isGone({ voltage, current }: PointSeen, held: Volts): boolean {
   return voltage.maximum < gone * held && (current.count === 0 || current.maximum < 0.05);
 }
 
-/**
- * What may flow at a lower voltage: as the last two points go on, a straight line over 1/V, but no more than
- * at a constant power, beyond which no limit goes. In regulation both say little, and there the guards must.
- */
-function currentAhead(traced: readonly Traced[], voltage: Volts): Amperes {
-  const last = traced.at(-1);
-  if (last === undefined || voltage <= 0) return 0;
-  const atSamePower = (last.current * last.voltage) / voltage;
-  const before = traced.at(-2);
-  if (before === undefined) return atSamePower;
+/** What may flow at lower voltages: as the last two points go on, a straight line over 1/V, as at constant power. */
+function currentAhead(before: Traced, last: Traced) {
   const slope = (last.current - before.current) / (1 / last.voltage - 1 / before.voltage);
-  return Math.min(atSamePower, last.current + slope * (1 / voltage - 1 / last.voltage));
+  return {
+    at: (voltage: Volts): Amperes =>
+      slope <= 0 || voltage <= 0 ? last.current : last.current + slope * (1 / voltage - 1 / last.voltage),
+    /** The voltage at which this current is expected, more than the last. */
+    whereIs: (current: Amperes): Volts => 1 / (1 / last.voltage + (current - last.current) / slope),
+  };
 }

@@ -39,7 +39,10 @@ describe('run', () => {
     const { status, stdout } = await railproof('run', 'real-limit', ...nursery, '--dry-run', '--json');
     expect(JSON.parse(stdout)).toMatchObject({
       format: 'railproof/plan 1',
-      steps: [{ kind: 'open-circuit', seconds: 5 }, { kind: 'load-ramp' }, { kind: 'dropout-search' }],
+      steps: [
+        { kind: 'open-circuit', seconds: 5 },
+        ...['load-ramp', 'dropout-search', 'limit-trace', 'recovery-check'].map((kind) => ({ kind })),
+      ],
       cautions: ['mains', 'hot-surfaces', 'earth-link-removed'],
     });
     expect(status).toBe(0);

@@ -26,8 +26,9 @@ describe('the trace of a limit', () => {
     const there = await stage({ ...exact, file: 'nursery-constant-current' });
     await there.perform('limit-trace', { points: 5 });
     const trace = traceOf(there);
+    // The second is one between, to see how the current goes on.
     expect(trace.map(({ volts }) => volts)).toEqual(
-      [14.9058, 11.4294, 7.9529, 4.4765, 1].map((volts) => expect.closeTo(volts, 3) as number),
+      [14.9058, 14.7775, 11.4294, 7.9529, 4.4765, 1].map((volts) => expect.closeTo(volts, 2) as number),
     );
     expect(trace.at(-1)?.volts).toBe(1);
     for (const { amps } of trace) expect(amps).toBeCloseTo(5.28, 1);
@@ -74,14 +75,20 @@ describe('the trace of a limit', () => {
 
   it('lets the module rest between two points, and steps down without a pause where none is asked for', async () => {
     const resting = await stage({ ...exact, file: 'nursery-constant-current' });
-    await resting.perform('limit-trace', { from: '10 V', to: '8 V', points: 3, watch: '0 s' });
+    await resting.perform('limit-trace', { from: '14.9 V', to: '14.8 V', points: 3, watch: '0 s' });
     expect(resting.the('input').map(({ state }) => state)).toEqual([
       'off',
       ...['on', 'off', 'on', 'off', 'on', 'off'],
       'off',
     ]);
     const hurrying = await stage({ ...exact, file: 'nursery-constant-current' });
-    await hurrying.perform('limit-trace', { from: '10 V', to: '8 V', points: 3, watch: '0 s', rest: '0 s' });
+    await hurrying.perform('limit-trace', {
+      from: '14.9 V',
+      to: '14.8 V',
+      points: 3,
+      watch: '0 s',
+      rest: '0 s',
+    });
     expect(hurrying.the('input').map(({ state }) => state)).toEqual(['off', 'on', 'off']);
   });
 
@@ -92,7 +99,7 @@ describe('the trace of a limit', () => {
       const { input, mode, setVoltage } = there.simulation.world.load;
       seen.push(`${input} ${mode} ${setVoltage > 0 ? 'some' : 'none'}`);
     });
-    await there.perform('limit-trace', { from: '10 V', to: '8 V', points: 2, watch: '0 s' });
+    await there.perform('limit-trace', { from: '14.9 V', to: '14.8 V', points: 2, watch: '0 s' });
     expect(seen).not.toContain('on current none');
     expect(seen).not.toContain('on voltage none');
     expect(seen.filter((state, index) => state !== seen[index - 1])).toEqual([
@@ -130,19 +137,37 @@ describe('the trace of a limit', () => {
     expect(Math.max(...amps)).toBeGreaterThan(7);
     expect(Math.max(...amps)).toBeLessThan(8);
     expect(there.the('notice').at(-1)?.text).toMatch(
-      /^at 9\.\d\d V the module would give about 8\.\d\d A, more than the bench allows; the trace ends here$/,
+      /^at 9\.\d\d V the module would give about 8\.\d\d A, more than is allowed; the trace ends here$/,
     );
     expect(there.simulation.world.load).toMatchObject(atRest);
   });
 
-  it('takes a point between where the next is so far down that a constant power would be too much', async () => {
+  it('takes a point between where the current grew so steeply that the next could be too much', async () => {
     const there = await stage({ ...exact, file: 'nursery-constant-current' });
     await there.perform('limit-trace', { points: 2, watch: '0 s' });
-    // 14.91 V × 5.3 A at 95 % of 8 A.
-    expect(traceOf(there).map(({ volts }) => volts)).toEqual([
-      expect.closeTo(14.91, 2),
-      expect.closeTo(10.4, 1),
-      1,
+    const volts = traceOf(there).map((point) => point.volts);
+    expect(volts).toEqual([expect.closeTo(14.91, 2), expect.closeTo(14.78, 2), 1]);
+    expect(there.the('notice')).toEqual([]);
+  });
+
+  it('ends before a module that nothing limits gives more than was allowed', async () => {
+    const there = await stage({
+      ...exact,
+      module: { droopResistance: 0.25, limit: { style: 'hiccup', current: 20, period: 0.8 } },
+    });
+    await there.perform('limit-trace', { ceiling: '6 A' });
+    const amps = traceOf(there).map((point) => point.amps);
+    expect(Math.max(...amps)).toBeGreaterThan(5);
+    expect(Math.max(...amps)).toBeLessThan(6);
+    expect(there.the('notice').at(-1)?.text).toMatch(/more than is allowed; the trace ends here$/);
+  });
+
+  it('ends after its first point where that is already more than was allowed', async () => {
+    const there = await stage({ ...exact, file: 'nursery-constant-current' });
+    await there.perform('limit-trace', { ceiling: '5 A' });
+    expect(traceOf(there)).toHaveLength(1);
+    expect(there.the('notice').map(({ text }) => text)).toEqual([
+      'the module gives more than is allowed; the trace ends here',
     ]);
   });
 
