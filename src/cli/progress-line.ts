@@ -52,7 +52,7 @@ export class ProgressLine implements RunWatcher {
     clearLine(this.#stream, 0);
   }
 
-  #text(step: number, { setCurrent, voltage, current, note }: Progress): string {
+  #text(step: number, { setCurrent, voltage, current, temperature, note }: Progress): string {
     const power = voltage === undefined || current === undefined ? undefined : voltage * current;
     const now = this.#clock.now();
     return [
@@ -61,6 +61,7 @@ export class ProgressLine implements RunWatcher {
       voltage === undefined ? '' : show(voltage, 'voltage'),
       current === undefined ? '' : show(current, 'current'),
       power === undefined ? '' : show(power, 'power'),
+      temperature === undefined ? '' : show(temperature, 'temperature'),
       note ?? '',
       `${minutes(now - this.#began)} gone, about ${minutes(this.#remaining(step, now))} left`,
     ]

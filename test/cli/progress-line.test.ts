@@ -27,9 +27,15 @@ describe('the progress of a run', () => {
     await clock.sleep(7);
     progress.progress(2, { setCurrent: 1.2, voltage: 15.1884, current: 1.1993 });
     const shown = text();
-    expect(shown).toContain('step 2 of 3: load-ramp, 21 points from 0 A to 4 A\n');
-    expect(shown).toContain('2/3   set 1.200 A   15.19 V   1.199 A   18.22 W   0:07 gone, about 0:36 left');
+    expect(shown).toContain('step 2 of 5: load-ramp, 21 points from 0 A to 4 A\n');
+    expect(shown).toContain('2/5   set 1.200 A   15.19 V   1.199 A   18.22 W   0:07 gone, about 1:41 left');
     expect(shown.split('\n')).toHaveLength(2);
+  });
+
+  it('shows how warm the module is, where that is measured', () => {
+    const { progress, text } = lineOn(true);
+    progress.progress(2, { voltage: 15, current: 4, temperature: 41.23 });
+    expect(text()).toContain('15.00 V   4.000 A   60.00 W   41.23 °C');
   });
 
   it('never breaks the line of a narrow terminal', async () => {
@@ -45,7 +51,7 @@ describe('the progress of a run', () => {
     progress.stepBegan(1, 'open-circuit', 'reads the idle module for 5 s');
     progress.progress(1, { voltage: 15.2, current: 0 });
     progress.clear();
-    expect(text()).toBe('step 1 of 3: open-circuit, reads the idle module for 5 s\n');
+    expect(text()).toBe('step 1 of 5: open-circuit, reads the idle module for 5 s\n');
   });
 
   it('says so when an instrument has no reading', () => {
