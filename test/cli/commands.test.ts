@@ -226,6 +226,8 @@ describe('drivers', () => {
       'load-short-scpi',
       'meter-query-scpi',
       'meter-read-scpi',
+      'scanner-route-scpi',
+      'thermometer-query-scpi',
       '',
     ]);
   });
