@@ -58,10 +58,11 @@ export function analyse(evidence: Evidence): readonly Finding[] {
     soaked,
     warm: warmDropout(evidence),
   });
+  const sharing = sharingFindings(evidence, { dropout: dropout[0], held });
   return [
     ...(usable === undefined ? [] : [usable.finding]),
-    ...recommendedFindings(evidence, usable, soaked),
-    ...sharingFindings(evidence, { dropout: dropout[0], held }),
+    ...recommendedFindings(evidence, usable, soaked, sharing.ownLabels),
+    ...sharing.findings,
     ...stackFindings(evidence, { dropout: dropout[0], held, openCircuit: idle[0] }),
     ...idle,
     ...regulation,

@@ -1,8 +1,9 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Ohms } from '../quantity/quantity.js';
+import type { Ohms, Ratio } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { LinearCombination, type LinearCombinationFit } from '../statistics/linear-combination.js';
-import type { Contribution } from '../statistics/uncertainty-budget.js';
+import { coverageFactor } from '../statistics/student-t.js';
+import { combine, type Contribution } from '../statistics/uncertainty-budget.js';
 import { type Finding, measured } from './finding.js';
 import { type GroupLook, meterOf } from './module-currents.js';
 import { promised, promisedErrors } from './promised-errors.js';
@@ -18,37 +19,44 @@ export type BallastsFound =
     }
   | { readonly kind: 'unknown'; readonly because: string };
 
+/** How sure one must be that a ballast is wrong, and by how much it must be, beyond what the bench file allows. */
+export interface Demand {
+  readonly coverage: Ratio;
+  readonly beyond: Ratio;
+}
+
 /** Beyond what a circuit of places can be solved for. */
-const mostPlaces = 16;
+const mostPlaces = 15;
 /** Places that are wrong by factors as close as this are wrong by one and the same. */
 const sameFactor = 1.02;
 
 /**
- * The load's current as a combination of the voltages across the ballasts, I_load = Σ Gₖ·vₖ: least squares
- * without an intercept over all looks. The points with one module unplugged tell the conductances apart.
- * Gains of the load and of the meters scale a conductance; an offset acts as a constant would on the
- * right-hand side, and goes in by what the same fit makes of a constant.
+ * The load's current as a combination of the voltages across the ballasts, I_load = Σ Gₖ·vₖ + c: least
+ * squares over all looks. The points with one module unplugged tell the conductances apart. The offsets of
+ * the load and of all meters are the constant c, whatever they are; their gains scale a conductance.
+ * @param demand what it takes to call a ballast wrong.
  */
-export function ballastsByRegression(header: RunHeader, looks: readonly GroupLook[]): BallastsFound {
+export function ballastsByRegression(
+  header: RunHeader,
+  looks: readonly GroupLook[],
+  demand: Demand,
+): BallastsFound {
   const places = header.modules.length;
   if (places > mostPlaces)
     return { kind: 'unknown', because: 'there are too many places to tell the ballasts apart' };
-  const fit = new LinearCombination(places);
-  const ofConstant = new LinearCombination(places);
-  for (const { currents, total } of looks) {
-    const volts = currents.map((each) => each.volts);
-    fit.add(volts, total);
-    ofConstant.add(volts, 1);
-  }
+  const fit = new LinearCombination(places + 1);
+  for (const { currents, total } of looks) fit.add([...currents.map(({ volts }) => volts), 1], total);
   const solved = fit.solve();
-  const constant = ofConstant.solve();
-  if (solved.kind === 'undetermined' || constant.kind === 'undetermined') return notToldApart;
+  if (solved.kind === 'undetermined') {
+    return solved.why === 'too-few-rows' ? { kind: 'unknown', because: '' } : notToldApart;
+  }
   const findings = looks[0]?.currents.map((each, index) =>
-    ballastFinding(header, { solved, constant, looks }, { ...each, index }),
+    ballastFinding(header, { solved, looks }, { ...each, index }),
   );
-  const backwards = findings?.findIndex(({ value }) => Number(value) <= 0) ?? -1;
-  if (findings === undefined || backwards !== -1) return notToldApart;
-  const wrong = findings.filter((finding, index) => !agrees(finding, header.bench.places?.[index]?.ballast));
+  if (findings?.every(isTold) !== true) return notToldApart;
+  const wrong = findings.filter(
+    (finding, index) => !agrees(finding, header.bench.places?.[index]?.ballast, demand),
+  );
   const factors = findings.map(
     ({ value }, index) => Number(value) / (header.bench.places?.[index]?.ballast?.resistance ?? Number.NaN),
   );
@@ -65,6 +73,14 @@ export function ballastsByRegression(header: RunHeader, looks: readonly GroupLoo
   return { kind: 'found', resistances, wrong };
 }
 
+/** A resistance that is known no better than this is not known. */
+const vague: Ratio = 0.15;
+
+function isTold({ value, interval }: Finding): boolean {
+  const expanded = interval === null ? 0 : (interval[1] - interval[0]) / 2;
+  return Number(value) > 0 && expanded <= vague * Number(value);
+}
+
 const notToldApart: BallastsFound = {
   kind: 'unknown',
   because: 'the ballasts cannot be told apart by what was read: measure each of them again',
@@ -72,8 +88,6 @@ const notToldApart: BallastsFound = {
 
 interface Solved {
   readonly solved: LinearCombinationFit;
-  /** What the same places make of a constant of 1 A. */
-  readonly constant: LinearCombinationFit;
   readonly looks: readonly GroupLook[];
 }
 
@@ -84,7 +98,7 @@ interface Where {
   readonly ballast: Ohms;
 }
 
-function ballastFinding(header: RunHeader, { solved, constant, looks }: Solved, where: Where): Finding {
+function ballastFinding(header: RunHeader, { solved, looks }: Solved, where: Where): Finding {
   const { coefficients } = solved;
   const conductance = coefficients[where.index] ?? Number.NaN;
   const resistance = 1 / conductance;
@@ -92,9 +106,8 @@ function ballastFinding(header: RunHeader, { solved, constant, looks }: Solved, 
   const inOhms = (ofConductance: number): Ohms => Math.abs(ofConductance) * resistance ** 2;
   const load = promisedErrors(header, 'load', 'current');
   const own = promisedErrors(header, meterOf(header, where.place), 'voltage');
-  const ofOneAmpere = constant.coefficients[where.index] ?? 0;
   // How a scatter of 1 A in the rows scatters this conductance; the places of the points alone say it.
-  const perAmpere = (constant.uncertainties[where.index] ?? 0) / (constant.residualDeviation || 1);
+  const perAmpere = (solved.uncertainties[where.index] ?? 0) / (solved.residualDeviation || 1);
   const scatter = Math.max(solved.residualDeviation, lastDigits(header, looks));
   const budget: readonly Contribution[] = [
     {
@@ -104,27 +117,13 @@ function ballastFinding(header: RunHeader, { solved, constant, looks }: Solved, 
       degreesOfFreedom: solved.degreesOfFreedom,
     },
     promised(`${load.of}, gain`, inOhms(load.gain * conductance)),
-    promised(`${load.of}, offset`, inOhms(load.offset * ofOneAmpere)),
     promised(`${own.of}, gain`, inOhms(own.gain * conductance)),
-    promised('meters, offset', inOhms(offsetsTogether(header, coefficients) * ofOneAmpere)),
   ];
   const says = header.bench.places?.[where.index]?.ballast?.resistance ?? Number.NaN;
   return measured(`ballast-of-${where.module}`, 'resistance', resistance, budget, {
     step: looks[0]?.step ?? null,
     note: `the bench file says ${formatQuantity(says, 'resistance')}: measure it again; shares are not given until then`,
   });
-}
-
-/** What the offsets of the meters add to the sum of the currents: of one meter once, of several independently. */
-function offsetsTogether(header: RunHeader, conductances: readonly number[]): number {
-  const byMeter = new Map<string, number>();
-  conductances.forEach((conductance, index) => {
-    const meter = meterOf(header, index + 1);
-    byMeter.set(meter, (byMeter.get(meter) ?? 0) + conductance);
-  });
-  return Math.hypot(
-    ...[...byMeter].map(([meter, sum]) => sum * promisedErrors(header, meter, 'voltage').offset),
-  );
 }
 
 /** What the last digits hide of a sum, in A: residuals smaller than that say nothing. */
@@ -136,10 +135,17 @@ function lastDigits(header: RunHeader, looks: readonly GroupLook[]): number {
 }
 
 function agrees(
-  { interval }: Finding,
+  { value, budget }: Finding,
   ballast: { readonly resistance: Ohms; readonly uncertainty: Ohms } | undefined,
+  { coverage, beyond }: Demand,
 ): boolean {
-  if (ballast === undefined || interval === null) return true;
-  const { resistance, uncertainty } = ballast;
-  return interval[1] >= resistance - uncertainty && interval[0] <= resistance + uncertainty;
+  if (ballast === undefined) return true;
+  const { standardUncertainty, degreesOfFreedom } = combine(budget);
+  const expanded =
+    standardUncertainty === 0 ? 0 : standardUncertainty * coverageFactor(degreesOfFreedom, coverage);
+  const allowed = ballast.uncertainty + beyond * ballast.resistance + arithmetic * ballast.resistance;
+  return Math.abs(Number(value) - ballast.resistance) <= expanded + allowed;
 }
+
+/** What adding floating-point numbers loses. */
+const arithmetic: Ratio = 1e-9;

@@ -32,7 +32,7 @@ export function hoggingFinding(header: RunHeader, sharing: Sharing): Finding | u
   const [low, high] = interval ?? [Number(value), Number(value)];
   const { most, least } = extremesOf(look);
   const current = look.currents.find(({ module }) => module === most)?.current ?? 0;
-  const carries = `${most} carries ${percent(current / sumOf(look))} of ${amps(look.total)}`;
+  const carries = `it carries ${percent(current / sumOf(look))} of ${amps(look.total)}`;
   const then =
     saturated === undefined
       ? ''

@@ -6,7 +6,7 @@ import type { RunningMoments } from '../statistics/running-moments.js';
 import { type Contribution, rectangular } from '../statistics/uncertainty-budget.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence } from './evidence.js';
-import { type PlaceLook, placeLooks, type PlaceRead } from './place-looks.js';
+import { believedStep, type PlaceLook, placeLooks, type PlaceRead } from './place-looks.js';
 import { promised, promisedErrors } from './promised-errors.js';
 
 /** One module's current at one look: the voltage across its ballast over the ballast's measured value. */
@@ -40,7 +40,7 @@ export function groupLooks(evidence: Evidence): readonly GroupLook[] {
   const { header } = evidence;
   if (header.circuit !== 'parallel') return [];
   return stepsOf(evidence, 'sharing-log').flatMap((step) =>
-    placeLooks(header, step)
+    placeLooks(header, believedStep(evidence, step))
       .filter(({ points }) => points.every(({ current }) => current.count > 0))
       .map((look) => withCurrents(header, look)),
   );

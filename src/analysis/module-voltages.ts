@@ -7,7 +7,7 @@ import { type Contribution, rectangular } from '../statistics/uncertainty-budget
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence } from './evidence.js';
 import { meterOf } from './module-currents.js';
-import { type PlaceLook, placeLooks } from './place-looks.js';
+import { believedStep, type PlaceLook, placeLooks } from './place-looks.js';
 import { promised, promisedErrors } from './promised-errors.js';
 
 /** One stacked module at one look. */
@@ -39,7 +39,7 @@ export function stackLooks(evidence: Evidence): readonly StackLook[] {
   const { header } = evidence;
   if (header.circuit !== 'series') return [];
   return stepsOf(evidence, 'stack-check').flatMap((step) =>
-    placeLooks(header, step)
+    placeLooks(header, believedStep(evidence, step))
       .filter(({ points }) => points.every(({ moduleVoltage }) => moduleVoltage.count > 0))
       .map((look) => withVoltages(header, look)),
   );

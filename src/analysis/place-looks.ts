@@ -2,7 +2,7 @@ import type { Amperes } from '../quantity/quantity.js';
 import type { PointOutcome } from '../record/journal-event.js';
 import type { RunHeader } from '../record/run-header.js';
 import type { RunningMoments } from '../statistics/running-moments.js';
-import type { PointEvidence, StepEvidence } from './evidence.js';
+import type { Evidence, PointEvidence, StepEvidence } from './evidence.js';
 
 /**
  * What a look at the places of a circuit is for: `together` with every module plugged in before anything
@@ -64,6 +64,16 @@ export function placeLooks({ circuit, modules }: RunHeader, step: StepEvidence):
     });
   }
   return [...joined.values()];
+}
+
+/**
+ * A step without the last point that it finished, where the run was ended in it against its plan: whatever
+ * ended it may have begun there already.
+ */
+export function believedStep({ ended, steps }: Evidence, step: StepEvidence): StepEvidence {
+  if (ended === undefined || ended.how === 'completed' || step !== steps.at(-1)) return step;
+  const last = step.points.findLastIndex(({ outcome }) => outcome !== undefined);
+  return { ...step, points: step.points.slice(0, Math.max(0, last)) };
 }
 
 /** Whether every place of the circuit was read. */

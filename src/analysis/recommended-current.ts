@@ -6,6 +6,7 @@ import { ambientFactor, marginFactor } from './derating-factors.js';
 import type { Evidence } from './evidence.js';
 import type { Factor, Finding } from './finding.js';
 import { nameplateFactor } from './nameplate-factor.js';
+import type { OwnLabels } from './own-labels.js';
 import { gone } from './recovery.js';
 import { temperatureFactor } from './temperature-factor.js';
 import { ratedOf } from './rated.js';
@@ -27,6 +28,7 @@ export function recommendedFindings(
   evidence: Evidence,
   usable: Usable | undefined,
   soaked?: Soaked,
+  ownLabels?: OwnLabels,
 ): readonly Finding[] {
   const { header } = evidence;
   const rated = ratedOf(header).current;
@@ -46,7 +48,7 @@ export function recommendedFindings(
   const derated = factors.slice(1).reduce((current, { factor }) => current * factor, low);
   let recommended = derated;
   let sets: string | undefined = low > 0 && derated === 0 ? 'air so warm allows no load' : undefined;
-  for (const cap of caps(evidence, { rated, soaked })) {
+  for (const cap of caps(evidence, { rated, soaked, ownLabels })) {
     const capped = cap(recommended);
     if (capped === undefined) continue;
     const { name, reason, current } = capped;
@@ -74,12 +76,19 @@ export function recommendedFindings(
 /** What may still lower the current, one after the other; each is given what those before it left. */
 function caps(
   evidence: Evidence,
-  { rated, soaked }: { rated: Amperes; soaked: Soaked | undefined },
+  {
+    rated,
+    soaked,
+    ownLabels,
+  }: { rated: Amperes; soaked: Soaked | undefined; ownLabels: OwnLabels | undefined },
 ): readonly ((current: Amperes) => Cap | undefined)[] {
   if (gone(evidence)) return [() => failure];
   const { header } = evidence;
   return [
     (current) => (current > 0 ? nameplateFactor(header, { rated, current, soaked }) : undefined),
+    // Where the procedure allows more than the labels, a soak has shown what each module bears.
+    (current) =>
+      header.derating.aboveNameplate === 'never' || soaked === undefined ? ownLabels?.(current) : undefined,
     (current) => (current > 0 ? temperatureFactor(header, { current, soaked }) : undefined),
   ];
 }

@@ -2,6 +2,7 @@ import { imbalanceOf } from '../circuit/imbalance.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Ratio } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
+import { combine, type Contribution } from '../statistics/uncertainty-budget.js';
 import { type Finding, measured } from './finding.js';
 import { budgetOf, type GroupLook } from './module-currents.js';
 
@@ -19,7 +20,7 @@ export function shareFindings(
   return look.currents.map(({ module, current, place }, index) => {
     const share = current / sum;
     const weights = look.currents.map((_, other) => ((other === index ? 1 : 0) - share) / sum);
-    const lowest = curve[0];
+    const lowest = lowestTold(header, curve);
     const there = lowest?.currents.find((each) => each.place === place)?.current ?? 0;
     const elsewhere =
       lowest === undefined || lowest.total >= look.total
@@ -42,22 +43,36 @@ export function imbalanceFinding(
   { setting, curve }: { readonly setting: Ratio; readonly curve: readonly GroupLook[] },
 ): Finding {
   const currents = look.currents.map(({ current }) => current);
-  const value = imbalanceOf(currents);
+  return measured('imbalance', 'ratio', imbalanceOf(currents), imbalanceBudget(header, look), {
+    step: look.step,
+    note: `at ${amps(look.total)}; ${percent(setting)} asked for${elsewhereInWords(header, look, curve)}`,
+  });
+}
+
+function imbalanceBudget(header: RunHeader, look: GroupLook): readonly Contribution[] {
+  const currents = look.currents.map(({ current }) => current);
   const { length } = currents;
   const mean = sumOf(look) / length;
   const most = currents.indexOf(Math.max(...currents));
   const least = currents.lastIndexOf(Math.min(...currents));
-  const weights = currents.map(
-    (_, index) => (Number(index === most) - Number(index === least) - value / length) / mean,
+  const modules = currents.map(
+    (_, index) => (Number(index === most) - Number(index === least) - imbalanceOf(currents) / length) / mean,
   );
-  return measured('imbalance', 'ratio', value, budgetOf(header, look, { modules: weights }), {
-    step: look.step,
-    note: `at ${amps(look.total)}; ${percent(setting)} asked for${elsewhereInWords(look, curve)}`,
-  });
+  return budgetOf(header, look, { modules });
 }
 
-function elsewhereInWords(look: GroupLook, curve: readonly GroupLook[]): string {
-  const [lowest] = curve;
+/** An imbalance at light load that is known no better than this says nothing. */
+const worthTelling: Ratio = 0.2;
+
+/** The lightest load at which the shares were still told apart well enough to be told. */
+function lowestTold(header: RunHeader, curve: readonly GroupLook[]): GroupLook | undefined {
+  return curve.find(
+    (look) => sumOf(look) > 0 && combine(imbalanceBudget(header, look)).expanded < worthTelling,
+  );
+}
+
+function elsewhereInWords(header: RunHeader, look: GroupLook, curve: readonly GroupLook[]): string {
+  const lowest = lowestTold(header, curve);
   const first = curve.find(({ set, step }) => set === look.set && step === look.step);
   const at = (one: GroupLook): string => percent(imbalanceOf(one.currents.map((each) => each.current)));
   const below =

@@ -9,6 +9,7 @@ import { hoggingFinding } from './hogging.js';
 import { currentsAddUp } from './kirchhoff.js';
 import { groupLooks } from './module-currents.js';
 import { moduleLines } from './module-lines.js';
+import { type OwnLabels, smallestLabel, withinOwnLabels } from './own-labels.js';
 import { firstToSaturate } from './saturation.js';
 import { imbalanceFinding, shareFindings } from './shares.js';
 
@@ -19,42 +20,48 @@ const usual = { imbalance: 0.1, tolerance: 0.01 };
  * How a parallel group shares its load: `group-current`, `hogging-module`, `recommended-ballast`,
  * `imbalance` and `share-of-<module>`, the last two at the highest point that was held. Nothing that rests
  * on the modules' currents is given unless these add up to the load's (Kirchhoff); where a ballast is what
- * is wrong, `ballast-of-<module>` names it.
+ * is wrong, `ballast-of-<module>` names it. `ownLabels` is what a recommendation must mind of all that.
  */
 export function sharingFindings(
   evidence: Evidence,
   found: { readonly dropout: Finding | undefined; readonly held: readonly CurvePoint[] },
-): readonly Finding[] {
+): { readonly findings: readonly Finding[]; readonly ownLabels?: OwnLabels } {
   const { header } = evidence;
-  if (header.circuit !== 'parallel') return [];
+  if (header.circuit !== 'parallel') return { findings: [] };
   const looks = groupLooks(evidence);
   const addUp = currentsAddUp(header, looks);
   const held = heldLooks(header, looks);
   const highest = held.at(-1);
   const step = looks[0]?.step ?? null;
   if (addUp.kind === 'wrong-ballasts' || addUp.kind === 'unexplained') {
-    return [
-      ...present(groupCurrent(evidence, found, '')),
-      inWords('hogging-module', 'undetermined', { step, note: addUp.note }),
-      ...(addUp.kind === 'wrong-ballasts' ? addUp.ballasts : []),
-    ];
+    return {
+      findings: [
+        ...present(groupCurrent(evidence, found, '')),
+        inWords('hogging-module', 'undetermined', { step, note: addUp.note }),
+        ...(addUp.kind === 'wrong-ballasts' ? addUp.ballasts : []),
+      ],
+      ownLabels: smallestLabel(header),
+    };
   }
-  if (highest === undefined) return present(groupCurrent(evidence, found, ''));
+  if (highest === undefined) return { findings: present(groupCurrent(evidence, found, '')) };
   const saturated = firstToSaturate(held);
   const { imbalance: setting, tolerance } = settingsOf(evidence, highest.step);
   const lines = moduleLines(header, looks, saturated);
-  return [
-    ...present(groupCurrent(evidence, found, howItFailed({ ...found, held, looks, saturated }))),
-    ...present(hoggingFinding(header, { held, looks, lines, saturated, setting })),
-    recommendedBallast(header, lines, {
-      load: highest.total,
-      imbalance: setting,
-      tolerance,
-      step: highest.step,
-    }),
-    imbalanceFinding(header, highest, { setting, curve: held }),
-    ...shareFindings(header, highest, held),
-  ];
+  return {
+    findings: [
+      ...present(groupCurrent(evidence, found, howItFailed({ ...found, held, looks, saturated }))),
+      ...present(hoggingFinding(header, { held, looks, lines, saturated, setting })),
+      recommendedBallast(header, lines, {
+        load: highest.total,
+        imbalance: setting,
+        tolerance,
+        step: highest.step,
+      }),
+      imbalanceFinding(header, highest, { setting, curve: held }),
+      ...shareFindings(header, highest, held),
+    ],
+    ownLabels: withinOwnLabels(header, held),
+  };
 }
 
 function settingsOf({ steps }: Evidence, step: number): Record<'imbalance' | 'tolerance', Ratio> {

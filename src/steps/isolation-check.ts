@@ -134,8 +134,9 @@ async function checkIsolation(given: Parameters, context: StepContext): Promise<
       earths.set(module.name, found.kind === 'proved' ? found.relation : 'undetermined');
       before = after;
     }
-    // Wired as a stack, a module that is tied to earth shorts those below it as soon as it is plugged in.
-    if (given.plugIn && circuit === 'series') requireIsolation(context);
+    // Wired as a stack, a module that is tied to earth shorts those below it as soon as it is plugged in,
+    // whether that is here or in a later step.
+    if (circuit === 'series') requireIsolation(context);
     await check.points.measure('voltage');
     await askToDo(context, ask.probesBack);
     bench.places.movedTo(undefined);

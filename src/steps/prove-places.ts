@@ -1,4 +1,5 @@
 import { WrongPlaceError } from '../bench/wrong-place-error.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Ratio, Seconds, Volts } from '../quantity/quantity.js';
 import type { RunningMoments } from '../statistics/running-moments.js';
 import { askToDo } from './ask-to-do.js';
@@ -17,6 +18,8 @@ export interface Proving {
 
 /** A place reads nothing when it reads less than this part of what it, or the largest of the others, read before. */
 const nothing: Ratio = 0.2;
+/** What is read must be this many times what the meter promises at zero before a place can be told dead from alive. */
+const tellable = 4;
 /** How far from its label a module's voltage may be before it is something else that is read. */
 const offLabel: Ratio = 0.25;
 /** What a supply takes to start. */
@@ -38,7 +41,8 @@ export async function provePlaces(
   proving: Proving,
 ): Promise<void> {
   const before = await look(context, points, pass, proving, undefined);
-  checkSigns(context, before);
+  checkSigns(context, before, undefined);
+  const unsure = errorAtZero(context);
   for (const { name } of context.underTest.modules) {
     if (pass.of !== undefined && pass.of !== name) continue;
     await askToDo(context, {
@@ -53,7 +57,18 @@ export async function provePlaces(
       act: `plug in ${name}`,
     });
     await context.clock.sleep(startUp, context.signal);
-    checkProof(context, name, before, without);
+    checkSigns(context, without, name);
+    const largest = Math.max(...[...before.values(), ...without.values()].map(Math.abs));
+    if (largest < tellable * unsure) {
+      context.journal.append({
+        event: 'notice',
+        text:
+          `it could not be shown that the place of ${name} is its own: no more than ${shown(largest)} is read, ` +
+          `and the meter may show ${shown(unsure)} where there is nothing`,
+      });
+      continue;
+    }
+    checkProof(context, name, before, without, Math.max(nothing * largest, unsure));
   }
 }
 
@@ -88,14 +103,18 @@ function meansOf(taps: ReadonlyMap<string, RunningMoments>): Read {
   return new Map([...taps].map(([at, moments]) => [at, moments.mean]));
 }
 
-/** With all plugged in: no place reads backwards, and in a stack each reads about what its label says. */
-function checkSigns({ bench, underTest }: StepContext, before: Read): void {
-  const least = 3 * (bench.meter?.driver.accuracy['voltage']?.fixed ?? 0);
-  const usual = Math.max(0, ...[...before.values()].map(Math.abs));
+/**
+ * No place reads backwards, and in a stack each module that is plugged in reads about what its label says.
+ * One that hardly carries with all plugged in shows its sign only when another is unplugged.
+ */
+function checkSigns(context: StepContext, read: Read, unplugged: string | undefined): void {
+  const { underTest } = context;
+  const least = 3 * errorAtZero(context);
+  const usual = Math.max(0, ...[...read.values()].map(Math.abs));
   for (const { place, at } of tapsOf(underTest)) {
-    const volts = before.get(at);
+    const volts = read.get(at);
     const module = underTest.modules[place - 1];
-    if (volts === undefined || module === undefined) continue;
+    if (volts === undefined || module === undefined || module.name === unplugged) continue;
     if (volts < -Math.max(least, usual / 10)) throw reversed(underTest.circuit, module.name);
     const { voltage } = module.rated;
     if (underTest.circuit === 'series' && Math.abs(volts - voltage) > voltage * offLabel) {
@@ -106,13 +125,30 @@ function checkSigns({ bench, underTest }: StepContext, before: Read): void {
   }
 }
 
-function checkProof({ underTest }: StepContext, unplugged: string, before: Read, without: Read): void {
+/** The largest half-width that a meter here promises at zero. */
+function errorAtZero({ bench }: StepContext): Volts {
+  const promises = bench.instruments
+    .filter(({ post }) => post === 'meter' || post.startsWith('meter-'))
+    .map(({ instrument }) => instrument.driver.accuracy['voltage']?.fixed ?? 0);
+  return Math.max(0, ...promises);
+}
+
+function shown(volts: Volts): string {
+  return formatQuantity(volts, 'voltage', { significant: 2 });
+}
+
+/** @param dead a place that reads less than this is dead. */
+function checkProof(
+  { underTest }: StepContext,
+  unplugged: string,
+  before: Read,
+  without: Read,
+  dead: Volts,
+): void {
   const taps = tapsOf(underTest);
   const own = taps.find(({ place }) => underTest.modules[place - 1]?.name === unplugged);
   if (own === undefined || !without.has(own.at)) return;
-  const largest = Math.max(...[...before.values(), ...without.values()].map(Math.abs));
-  const isDead = (read: Read, at: string): boolean =>
-    Math.abs(read.get(at) ?? Number.NaN) < nothing * largest;
+  const isDead = (read: Read, at: string): boolean => Math.abs(read.get(at) ?? Number.NaN) <= dead;
   if (isDead(without, own.at)) return;
   const other = taps.find(({ at }) => at !== own.at && isDead(without, at) && !isDead(before, at));
   const standing = other === undefined ? undefined : underTest.modules[other.place - 1]?.name;

@@ -11,8 +11,8 @@ import { provePlaces } from './prove-places.js';
 
 const readingTime = 0.1;
 const day: Seconds = 24 * 3600;
-/** Of the smallest label: enough to be read across a ballast, little enough for any of them alone. */
-const provingShare = 0.25;
+/** Of the smallest label: the more the better it is read across a ballast, and any of them must carry it alone. */
+const provingShare = 0.6;
 
 export const sharingLog = defineStep({
   kind: 'sharing-log',

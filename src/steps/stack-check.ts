@@ -10,6 +10,7 @@ import { Points } from './point.js';
 import { provePlaces } from './prove-places.js';
 
 const readingTime = 0.1;
+const rounding = 1e-9;
 
 export const stackCheck = defineStep({
   kind: 'stack-check',
@@ -45,7 +46,8 @@ export const stackCheck = defineStep({
         phase: 'stack',
         from,
         to,
-        below: reached,
+        // The point that was not held is looked at on every pass: whose voltage goes shows at its own place only.
+        below: reached * (1 + rounding),
       });
       reached = Math.min(reached, climbed.dropped ?? Number.POSITIVE_INFINITY);
       return reached > from ? 'go-on' : 'enough';
