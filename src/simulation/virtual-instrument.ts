@@ -1,10 +1,11 @@
 import { type Group, type Post, roleOf } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
 import type { SimulatedError, Simulation } from '../files/simulation-section.js';
-import type { Amperes, Ohms, Seconds, Volts } from '../quantity/quantity.js';
+import type { Ohms, Seconds } from '../quantity/quantity.js';
 import type { Dialect, Interpreter, MeterMode } from './dialects/dialect.js';
 import { errorOf, shown } from './instrument-errors.js';
 import { faultTime, reversedFrom } from './instrument-faults.js';
+import { Lag } from './lag.js';
 import type { Incoming } from './message-splitter.js';
 import { ohmsAt, type Sight, voltsAt } from './meter-sight.js';
 import type { MeterPlace, Probes } from './probes.js';
@@ -28,12 +29,6 @@ const RELAY_TIME: Seconds = 0.004;
 
 /** The leads of a meter, there and back. */
 const LEADS = { least: 0.1, most: 0.3 };
-
-/**
- * So many time constants fit into the settling time that the driver gives: by then a step has come to within
- * a twentieth of a thousandth of its size, which is what "settled" means to an honest maker.
- */
-const TIME_CONSTANTS_IN_SETTLING = 10;
 
 /** The range of a load whose driver gives no ratings. */
 const USUAL_RANGE = { current: 60, voltage: 150 };
@@ -74,18 +69,12 @@ export class VirtualInstrument {
   readonly #errors: Readonly<Record<Quantity, SimulatedError>>;
   readonly #random: Random;
   readonly #readingTime: Seconds;
-  readonly #timeConstant: Seconds;
   readonly #relays: Relays;
   readonly #leads: Ohms;
   #mode: MeterMode = 'voltage';
   /** When someone at its panel sets the meter to resistance; never, once that is done. */
   #panelAt: Seconds;
-  /** What the last change of the output has yet to bring into the readings. */
-  #lag: { readonly since: Seconds; readonly voltage: Volts; readonly current: Amperes } = {
-    since: 0,
-    voltage: 0,
-    current: 0,
-  };
+  readonly #lag: Lag;
   /** One thing after the other: when it has done all that it was told. */
   #free: Seconds = 0;
 
@@ -116,13 +105,16 @@ export class VirtualInstrument {
     this.#leads = random.fork(`${post} leads`).uniform(LEADS.least, LEADS.most);
     this.#readingTime =
       (simulation.instruments[post] ?? simulation.instruments[role])?.readingTime ?? USUAL_READING_TIME[role];
-    this.#timeConstant = driver.settling / TIME_CONSTANTS_IN_SETTLING;
+    this.#lag = new Lag(driver.settling);
     const stuck = fault('scanner-stuck');
     const unnoticed = fault('scanner-stuck-unnoticed');
     this.#relays = new Relays({ from: Math.min(stuck, unnoticed), noticed: stuck <= unnoticed });
     this.#interpreter = this.#wake(dialect, driver);
     bench.onStep((before, after) => {
-      this.#step(before, after);
+      this.#lag.step(after.at, {
+        voltage: this.#seen(before).volts - this.#seen(after).volts,
+        current: before.current - after.current,
+      });
     });
   }
 
@@ -196,9 +188,9 @@ export class VirtualInstrument {
     const sights = moments.map((moment) => this.#seen(moment));
     const deviation = Math.max(...sights.map(({ noise }) => noise));
     const noise = deviation === 0 ? 0 : deviation * this.#random.normal();
-    const current = mean(moments.map((moment) => moment.current + this.#lagging('current', moment.at)));
+    const current = mean(moments.map((moment) => moment.current + this.#lag.of('current', moment.at)));
     const voltage =
-      mean(moments.map(({ at }, look) => (sights[look]?.volts ?? 0) + this.#lagging('voltage', at))) + noise;
+      mean(moments.map(({ at }, look) => (sights[look]?.volts ?? 0) + this.#lag.of('voltage', at))) + noise;
     const value = { voltage, current, power: voltage * current }[what];
     return shown(value, this.#errors[what], this.#random);
   }
@@ -248,20 +240,6 @@ export class VirtualInstrument {
       (place.kind === 'ballast-of' || place.kind === 'output-of') &&
       at >= reversedFrom(this.#simulation, place.module)
     );
-  }
-
-  #lagging(what: 'voltage' | 'current', at: Seconds): number {
-    if (this.#timeConstant === 0) return 0;
-    return this.#lag[what] * Math.exp(-Math.max(0, at - this.#lag.since) / this.#timeConstant);
-  }
-
-  #step(before: Moment, after: Moment): void {
-    if (this.#timeConstant === 0) return;
-    this.#lag = {
-      since: after.at,
-      voltage: this.#lagging('voltage', after.at) + this.#seen(before).volts - this.#seen(after).volts,
-      current: this.#lagging('current', after.at) + before.current - after.current,
-    };
   }
 }
 
