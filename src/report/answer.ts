@@ -1,19 +1,23 @@
-import { type Finding, findingNamed } from '../analysis/finding.js';
+import { findingNamed } from '../analysis/finding.js';
 import { compareWithBaseline } from '../judgement/compare.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes } from '../quantity/quantity.js';
 import { changesInWords } from './changes.js';
 import { inOneLine } from './finding-text.js';
 import { groupAnswer } from './group-answer.js';
+import { earthAnswer, moduleAnswer } from './module-answer.js';
 import { endedHow, type Result } from './result.js';
 
-/** What the technician came for, in a few sentences, the first of which is what to do. Empty when nothing was found. */
+/** What the technician came for, in a few sentences: what does not conform, what to do,
+ * and why. Empty when nothing was found. */
 export function answer(result: Result): readonly string[] {
   const single = result.header.circuit === 'single';
   const [first, ...reasons] = advice(result);
   return [
+    ...verdict(result),
     ...(first === undefined ? [] : [first]),
-    ...(single ? reasons : groupAnswer(result)),
+    ...(single ? [...reasons, ...moduleAnswer(result.findings)] : groupAnswer(result)),
+    ...earthAnswer(result.findings),
     ...sinceBaseline(result),
   ];
 }
@@ -31,7 +35,6 @@ function advice(result: Result): readonly string[] {
   return [
     `${sentence.charAt(0).toUpperCase()}${sentence.slice(1)}.`,
     `It delivers ${inOneLine(usable)}; ${usable.note}.`,
-    ...limit(result.findings),
   ];
 }
 
@@ -43,17 +46,11 @@ function sinceBaseline({ header, findings }: Result): readonly string[] {
   return [`Compared with ${header.baseline.run}: ${first}`, ...others];
 }
 
-/** Where it leaves regulation, where it drops out, and what it does there. */
-function limit(findings: readonly Finding[]): readonly string[] {
-  const onset = findingNamed(findings, 'limit-onset-current');
-  const dropout = findingNamed(findings, 'dropout-current');
-  const style = findingNamed(findings, 'limit-style');
-  if (dropout === undefined) return [];
-  const end = `drops out at ${inOneLine(dropout)}`;
-  const way = style === undefined || style.value === 'undetermined' ? '' : ` (${String(style.value)})`;
-  return onset === undefined
-    ? [`It regulates until it ${end}${way}.`]
-    : [`It leaves regulation at ${inOneLine(onset)} and ${end}${way}.`];
+/** What was asked for and is not met comes first: nobody should read on and miss it. */
+function verdict({ decisions, outcome }: Result): readonly string[] {
+  if (outcome !== 'does-not-conform') return [];
+  const names = decisions.flatMap((one) => (one.outcome === outcome ? [one.finding] : []));
+  return [`It does not conform: ${[...new Set(names)].join(', ')}.`];
 }
 
 /** To three digits, and never up: a recommendation must not grow by being written. */

@@ -109,7 +109,7 @@ function findingsTable({ findings }: Result, style: Style): string {
     const plusMinus = uncertainty === '' ? '' : '±';
     return [
       finding.name,
-      value,
+      finding.bound === 'least' ? `≥ ${value}` : value,
       plusMinus,
       uncertainty,
       unit,

@@ -12,7 +12,7 @@ const recommended = (value: number): Finding => ({ ...amps('recommended-current'
 const usable: Finding = { ...amps('usable-current', 5.5), note: 'above that it drops out' };
 
 function answerTo(...findings: readonly Finding[]): readonly string[] {
-  return answer({ ...resultOf(), findings });
+  return answer({ ...resultOf(), findings, decisions: [], outcome: 'not-judged' });
 }
 
 describe('the answer', () => {
@@ -50,11 +50,62 @@ describe('the answer', () => {
     expect(answerTo(usable)).toEqual([]);
   });
 
+  it('begins with what does not conform, so that nobody reads on and misses it', () => {
+    const decision = { requirement: '', probability: null, note: '' } as const;
+    const decisions = [
+      { ...decision, finding: 'droop-resistance', outcome: 'does-not-conform' },
+      { ...decision, finding: 'usable-current', outcome: 'conforms' },
+      { ...decision, finding: 'droop-resistance', outcome: 'does-not-conform' },
+    ] as const;
+    const findings = [recommended(4), usable];
+    expect(answer({ ...resultOf(), findings, decisions, outcome: 'does-not-conform' }).slice(0, 2)).toEqual([
+      'It does not conform: droop-resistance.',
+      'Load it continuously with up to 4.00 A.',
+    ]);
+  });
+
+  it('says how an output stands to earth, of each module where there are several', () => {
+    const open: Finding = {
+      ...measured('earth-resistance', 'resistance', 1e7, [promised('the meter', 0)], { step: 1 }),
+      interval: null,
+      bound: 'least',
+    };
+    expect(answerTo(inWords('earth-relation', 'isolated', { step: 1, note: 'above 1 MΩ' }), open)).toEqual([
+      'Its output is isolated from earth (at least 10.00 MΩ); above 1 MΩ.',
+    ]);
+    expect(
+      answerTo(
+        inWords('earth-relation-of-K1', 'bonded', { step: 1 }),
+        inWords('earth-relation-of-K2', 'undetermined', { step: 1, note: 'the leads were not proved' }),
+      ),
+    ).toEqual([
+      'The output of K1 is tied to earth.',
+      'The output of K2 may or may not be tied to earth, which could not be told; the leads were not proved.',
+    ]);
+  });
+
+  it('says what flows into a short circuit and how warm the module gets', () => {
+    expect(
+      answerTo(
+        amps('short-circuit-current', 1.2),
+        inWords('limit-style', 'foldback', { step: 3 }),
+        measured('temperature-rise', 'temperature-difference', 35, [promised('the thermometer', 0.5)], {
+          step: 2,
+          note: 'at 4.00 A: settles at 58 °C in air of 23 °C',
+        }),
+      ),
+    ).toEqual([
+      'Into a short circuit it gives 1.200 ± 0.020 A (foldback).',
+      'It warms by 35.00 ± 0.98 K: at 4.00 A: settles at 58 °C in air of 23 °C.',
+    ]);
+  });
+
   it('says what moved since the baseline, also where nothing is recommended', () => {
-    const result = resultOf();
+    const result = { ...resultOf(), decisions: [], outcome: 'not-judged' } as const;
     const baseline = aBaseline();
     const findings = [relationOf('isolated'), droopOf(0.036)];
     expect(answer({ ...result, header: { ...result.header, baseline }, findings })).toEqual([
+      'Its output is isolated from earth.',
       'Compared with 20261101T080000Z-K1-acceptance: droop-resistance moved from 18.00 mΩ to 36.00 mΩ, by +18.00 ± 0.28 mΩ (+100 %); allowed is 20 %.',
       'earth-relation became isolated, as it must.',
     ]);
