@@ -24,7 +24,7 @@ export interface Difference {
   readonly standardUncertainty: number | null;
   /** 95 %: U = √(U₁² + U₂²). Null where neither side has one. */
   readonly expanded: number | null;
-  /** Δ/√(U₁² + U₂²); null where there is no uncertainty to measure the difference by. */
+  /** Δ/√(U₁² + U₂²); null where there is no uncertainty to measure the difference by, or one side is a bound only. */
   readonly normalizedError: number | null;
   /** Of the earlier value; null where that is not clearly other than nothing. */
   readonly share: Ratio | null;
@@ -54,12 +54,13 @@ export function differenceOf(before: Measured, after: Measured): Difference {
   const value = after.value - before.value;
   const expanded = together(halfWidth(before), halfWidth(after));
   const earlier = Math.abs(before.value);
+  const bounded = before.bound !== undefined || after.bound !== undefined;
   return {
     value,
     dimension: before.dimension === 'temperature' ? 'temperature-difference' : before.dimension,
     standardUncertainty: together(before.standardUncertainty, after.standardUncertainty),
     expanded,
-    normalizedError: expanded === null || expanded === 0 ? null : value / expanded,
+    normalizedError: bounded || expanded === null || expanded === 0 ? null : value / expanded,
     share: earlier > (halfWidth(before) ?? 0) ? value / earlier : null,
   };
 }
