@@ -68,12 +68,16 @@ export function placeLooks({ circuit, modules }: RunHeader, step: StepEvidence):
 
 /**
  * A step without the last point that it finished, where the run was ended in it against its plan: whatever
- * ended it may have begun there already.
+ * ended it may have begun there already. A proof that nothing came after proves nothing.
  */
 export function believedStep({ ended, steps }: Evidence, step: StepEvidence): StepEvidence {
   if (ended === undefined || ended.how === 'completed' || step !== steps.at(-1)) return step;
   const last = step.points.findLastIndex(({ outcome }) => outcome !== undefined);
-  return { ...step, points: step.points.slice(0, Math.max(0, last)) };
+  const points = step.points.slice(0, Math.max(0, last));
+  return {
+    ...step,
+    points: points.some(({ phase }) => phase === 'share' || phase === 'stack') ? points : [],
+  };
 }
 
 /** Whether every place of the circuit was read. */

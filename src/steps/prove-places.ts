@@ -104,8 +104,8 @@ function meansOf(taps: ReadonlyMap<string, RunningMoments>): Read {
 }
 
 /**
- * No place reads backwards, and in a stack each module that is plugged in reads about what its label says.
- * One that hardly carries with all plugged in shows its sign only when another is unplugged.
+ * No place reads backwards; one that hardly carries with all plugged in shows its sign only when another is
+ * unplugged. In a stack with all plugged in each module reads about what its label says.
  */
 function checkSigns(context: StepContext, read: Read, unplugged: string | undefined): void {
   const { underTest } = context;
@@ -117,7 +117,8 @@ function checkSigns(context: StepContext, read: Read, unplugged: string | undefi
     if (volts === undefined || module === undefined || module.name === unplugged) continue;
     if (volts < -Math.max(least, usual / 10)) throw reversed(underTest.circuit, module.name);
     const { voltage } = module.rated;
-    if (underTest.circuit === 'series' && Math.abs(volts - voltage) > voltage * offLabel) {
+    const isAsked = underTest.circuit === 'series' && unplugged === undefined;
+    if (isAsked && Math.abs(volts - voltage) > voltage * offLabel) {
       throw elsewhere(
         `at the place of ${module.name} ${volts.toFixed(2)} V is read, and its label says ${voltage} V`,
       );
