@@ -1,13 +1,13 @@
 import type { Amperes, Ohms, Ratio, Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
-import { effectiveDegreesOfFreedom, type UncertainPart } from '../statistics/effective-freedom.js';
+import type { UncertainPart } from '../statistics/effective-freedom.js';
 import { mean } from '../statistics/checked.js';
-import type { RunningMoments } from '../statistics/running-moments.js';
 import { type Contribution, rectangular } from '../statistics/uncertainty-budget.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence } from './evidence.js';
 import { believedStep, type PlaceLook, placeLooks, type PlaceRead } from './place-looks.js';
 import { promised, promisedErrors } from './promised-errors.js';
+import { scaled, scatterOf, scatterOfMean, together } from './scatter.js';
 
 /** One module's current at one look: the voltage across its ballast over the ballast's measured value. */
 export interface ModuleCurrent {
@@ -108,29 +108,6 @@ function movement(points: readonly PointEvidence[], total: Amperes): Movement {
 
 function width(values: readonly number[]): number {
   return Math.max(...values) - Math.min(...values);
-}
-
-/** Of the mean of a point's readings; a single reading shows no scatter. */
-function scatterOf(moments: RunningMoments): UncertainPart {
-  return moments.uncertaintyOfMean === undefined
-    ? { uncertainty: 0, degreesOfFreedom: Number.POSITIVE_INFINITY }
-    : { uncertainty: moments.uncertaintyOfMean, degreesOfFreedom: moments.count - 1 };
-}
-
-function scatterOfMean(all: readonly RunningMoments[]): UncertainPart {
-  return together(all.map(scatterOf).map((part) => scaled(part, 1 / all.length)));
-}
-
-function scaled({ uncertainty, degreesOfFreedom }: UncertainPart, factor: number): UncertainPart {
-  return { uncertainty: Math.abs(uncertainty * factor), degreesOfFreedom };
-}
-
-function together(parts: readonly UncertainPart[]): UncertainPart {
-  if (parts.length === 0) return { uncertainty: 0, degreesOfFreedom: Number.POSITIVE_INFINITY };
-  return {
-    uncertainty: Math.hypot(...parts.map(({ uncertainty }) => uncertainty)),
-    degreesOfFreedom: effectiveDegreesOfFreedom(parts),
-  };
 }
 
 /** The post of the meter that reads a place: its own where it has one, else the one there is for all. */

@@ -1,14 +1,14 @@
 import type { Amperes, Ohms, Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { mean } from '../statistics/checked.js';
-import { effectiveDegreesOfFreedom, type UncertainPart } from '../statistics/effective-freedom.js';
-import type { RunningMoments } from '../statistics/running-moments.js';
+import type { UncertainPart } from '../statistics/effective-freedom.js';
 import { type Contribution, rectangular } from '../statistics/uncertainty-budget.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence } from './evidence.js';
 import { meterOf } from './module-currents.js';
 import { believedStep, type PlaceLook, placeLooks } from './place-looks.js';
 import { promised, promisedErrors } from './promised-errors.js';
+import { scatterOf, scatterOfMean, together } from './scatter.js';
 
 /** One stacked module at one look. */
 export interface ModuleVoltage {
@@ -53,7 +53,7 @@ function withVoltages(header: RunHeader, look: PlaceLook): StackLook {
     ...look,
     current: look.set === undefined || currents.length === 0 ? 0 : mean(currents),
     output: mean(means),
-    outputScatter: together(outputs.map((moments) => scatterOf(moments, 1 / outputs.length))),
+    outputScatter: scatterOfMean(outputs),
     outputBy: look.points.some(({ voltageBy }) => voltageBy === 'load') ? 'load' : 'meter',
     drift: rectangular((Math.max(...means) - Math.min(...means)) / 2),
     modules: header.modules.flatMap(({ name }, index) => {
@@ -65,25 +65,10 @@ function withVoltages(header: RunHeader, look: PlaceLook): StackLook {
           place: index + 1,
           volts: read.volts.mean,
           series: header.bench.places?.[index]?.ballast ?? { resistance: 0, uncertainty: 0 },
-          scatter: scatterOf(read.volts, 1),
+          scatter: scatterOf(read.volts),
         },
       ];
     }),
-  };
-}
-
-function scatterOf(moments: RunningMoments, factor: number): UncertainPart {
-  const { uncertaintyOfMean, count } = moments;
-  return uncertaintyOfMean === undefined
-    ? { uncertainty: 0, degreesOfFreedom: Number.POSITIVE_INFINITY }
-    : { uncertainty: uncertaintyOfMean * factor, degreesOfFreedom: count - 1 };
-}
-
-function together(parts: readonly UncertainPart[]): UncertainPart {
-  if (parts.length === 0) return { uncertainty: 0, degreesOfFreedom: Number.POSITIVE_INFINITY };
-  return {
-    uncertainty: Math.hypot(...parts.map(({ uncertainty }) => uncertainty)),
-    degreesOfFreedom: effectiveDegreesOfFreedom(parts),
   };
 }
 
