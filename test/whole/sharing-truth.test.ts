@@ -26,6 +26,10 @@ interface Estimate {
   readonly halfWidth: number;
 }
 
+function isMissed({ estimate, truth, halfWidth }: Estimate): boolean {
+  return !(Math.abs(estimate - truth) <= halfWidth);
+}
+
 /** Two or three bricks that nobody has seen before; ballasts as they are, and as someone measured them. */
 function randomCircuit(circuit: CircuitCase['circuit'], measuredBy: MeasuredBy, seed: number): CircuitCase {
   const { uniform: between } = randomFrom(seed).fork(`${circuit} by ${measuredBy}`);
@@ -83,6 +87,16 @@ describe.each([
   ['parallel', 'sharing', ['share-of-', 'imbalance', 'group-current']],
   ['series', 'stacking', ['stack-voltage', 'float-voltage-of-']],
 ] as const)('the truth that went into a simulated %s circuit comes back', (circuit, procedure, families) => {
+  const all: Estimate[] = [];
+
+  afterAll(() => {
+    // Hooks run after the tests of all three ways; what one way forgives for its few runs, they may not all need.
+    for (const family of families) {
+      const its = all.filter(({ name }) => name.startsWith(family));
+      expect(its.filter(isMissed).length / its.length, family).toBeLessThanOrEqual(0.1);
+    }
+  });
+
   describe.each(ways)('measured by %s', (measuredBy) => {
     const estimates: Estimate[] = [];
     const ended: (string | undefined)[] = [];
@@ -98,9 +112,12 @@ describe.each([
           const finding = result.findings.find((one) => one.name === name);
           const [low, high] = finding?.interval ?? [Number.NaN, Number.NaN];
           const halfWidth = (high - low) / 2;
+          // The lowest 0 V is where the others are counted from, and no estimate.
+          if (truth === 0) continue;
           estimates.push({ seed, name, estimate: Number(finding?.value), truth, halfWidth });
         }
       }
+      all.push(...estimates);
     }, 600_000);
 
     afterAll(() => {
@@ -113,11 +130,10 @@ describe.each([
 
     it.each(families)('%s: the intervals for 95 percent hold the truth in at least nine of ten', (family) => {
       const its = estimates.filter(({ name }) => name.startsWith(family));
-      const missed = its.filter(
-        ({ estimate, truth, halfWidth }) => !(Math.abs(estimate - truth) <= halfWidth + 1e-12),
-      );
+      const missed = its.filter(isMissed);
       expect(its.length).toBeGreaterThan(seeds / 2);
-      expect(missed.length / its.length, JSON.stringify(missed)).toBeLessThanOrEqual(0.1);
+      // One in twenty is to be missed, so one of a few says nothing.
+      expect(missed.length, JSON.stringify(missed)).toBeLessThanOrEqual(Math.max(1, 0.1 * its.length));
     });
 
     it.each(families)('%s: the intervals are no wider than they must be', (family) => {
