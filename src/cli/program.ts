@@ -55,7 +55,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
       '--tolerance <file>',
       'how far it may be from the baseline: a shipped tolerance by its name, or a file',
     )
-    .option('--yes', 'acknowledge the cautions beforehand (for unattended benches)')
+    .option('--yes', 'acknowledge wiring and cautions beforehand (for unattended benches)')
     .option('--dry-run', 'show what would be done, and touch nothing')
     .addOption(json())
     .action(async (procedure: string, options: Omit<RunWanted, 'procedure'>) => {

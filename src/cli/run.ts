@@ -93,7 +93,7 @@ function requireOperator(plan: Plan, operator: Operator, yes: boolean): void {
   const needing = plan.steps.flatMap((step, index) =>
     needsOperator(step, plan.bench) ? [`step ${index + 1} (${step.kind.kind})`] : [],
   );
-  if (!yes && plan.cautions.length > 0) needing.push('its cautions');
   if (!yes && plan.procedure.wiring.length > 0) needing.push('its wiring');
+  if (!yes && plan.cautions.length > 0) needing.push('its cautions');
   if (needing.length > 0) throw new OperatorAbsentError(needing);
 }

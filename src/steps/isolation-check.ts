@@ -12,6 +12,7 @@ import { defineStep } from './define-step.js';
 import { longestDwell } from './dwell.js';
 import { requireIsolation } from './isolation-proved.js';
 import * as ask from './isolation-prompts.js';
+import { sayWhatIsLeft } from './left-behind.js';
 import { MeterPoints } from './meter-points.js';
 import { proveLeads } from './prove-leads.js';
 import type { StepContext } from './step-kind.js';
@@ -191,15 +192,14 @@ async function readEarth({ context, points, given }: Check, module: Module): Pro
 }
 
 /** Whatever went wrong: the meter measures voltages again, as whatever comes after takes for granted. */
-async function leaveUnplugged({ bench, underTest, journal, show }: StepContext): Promise<void> {
+async function leaveUnplugged(context: StepContext): Promise<void> {
+  const { bench, underTest } = context;
   await bench.regardless(async () => bench.meter?.perform('measure-voltage')).catch(() => undefined);
-  const text = `the check of the isolation ended early: ${ask.named(underTest.modules)} may still be unplugged, and the meter's leads off their place`;
-  show({ note: text });
-  try {
-    journal.append({ event: 'notice', text });
-  } catch {
-    // The journal may be what failed, and what failed first is what must be told.
-  }
+  const modules = ask.named(underTest.modules);
+  sayWhatIsLeft(
+    context,
+    `the check of the isolation ended early: ${modules} may still be unplugged, and the meter's leads off their place`,
+  );
 }
 
 function inWords({ values, open }: OhmReadings): string {

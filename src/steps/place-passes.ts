@@ -1,6 +1,7 @@
 import type { Tap } from '../bench/sample.js';
 import type { StepContext } from './step-kind.js';
 import { askToDo } from './ask-to-do.js';
+import { sayWhatIsLeft } from './left-behind.js';
 import { tapsOf } from './under-test.js';
 
 /** One way through the points of a step, with the taps that are read on it. */
@@ -25,12 +26,17 @@ export async function passThrough(
     await each({ taps, of: undefined });
     return;
   }
-  for (const tap of taps) {
-    const module = underTest.modules[tap.place - 1]?.name ?? '';
-    await moveProbes(context, tap, module);
-    if ((await each({ taps: [tap], of: module })) === 'enough') break;
+  try {
+    for (const tap of taps) {
+      const module = underTest.modules[tap.place - 1]?.name ?? '';
+      await moveProbes(context, tap, module);
+      if ((await each({ taps: [tap], of: module })) === 'enough') break;
+    }
+    await probesBack(context);
+  } catch (error) {
+    sayWhatIsLeft(context, "it ended early: the meter's probes may still be across one module's place");
+    throw error;
   }
-  await probesBack(context);
 }
 
 /** Nobody reaches for the probes while a current flows. */
