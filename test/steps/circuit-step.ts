@@ -3,6 +3,7 @@ import type { Post } from '../../src/files/bench.js';
 import type { Module } from '../../src/files/module.js';
 import type { JournalEvent } from '../../src/record/journal-event.js';
 import { underTestOf } from '../../src/run/plan-circuit.js';
+import { StoppedByOperator } from '../../src/run/stopped.js';
 import { stepKinds } from '../../src/steps/index.js';
 import type { Operator } from '../../src/steps/operator.js';
 import type { StepContext } from '../../src/steps/step-kind.js';
@@ -12,6 +13,12 @@ import { k1, type Timed } from './one-step.js';
 export interface CircuitStepChange extends GroupChange {
   /** As --module names them; in the order in which they stand when left out. */
   readonly named?: readonly string[];
+  /** What the label of each says, where it is not 12 V, 3 A. */
+  readonly labels?: Readonly<Record<string, Module['rated']>>;
+  /** Whose plug is really pulled, by the name that is marked on it. */
+  readonly plugs?: Readonly<Record<string, string>>;
+  /** Aborts the run when it is asked for this act; it is not done. */
+  readonly stopAt?: string;
   /** How each stands to earth; isolated when left out. */
   readonly earths?: StepContext['earths'];
 }
@@ -35,6 +42,7 @@ export async function circuitStep(
   const { circuit = 'parallel', named = ['K1', 'K2', 'K3'] } = change;
   const events: Timed[] = [];
   const acts: string[] = [];
+  const stop = new AbortController();
   const { clock, simulation } = place;
   const append = (event: JournalEvent): void => {
     events.push({ t: clock.now(), ...event });
@@ -55,16 +63,19 @@ export async function circuitStep(
   const [first, ...others] = named.map((name): Module => ({
     ...k1,
     name,
-    rated: { voltage: 12, current: 3 },
+    rated: change.labels?.[name] ?? { voltage: 12, current: 3 },
   }));
   if (first === undefined) throw new Error('a circuit has modules');
   const underTest = underTestOf(circuit, [first, ...others]);
   const operator: Operator = {
     present: true,
     acknowledge: () => Promise.resolve('operator'),
-    async ask({ act = '' }) {
+    async ask({ act = '' }, signal) {
       acts.push(act);
-      await simulation.operator.act(act);
+      if (act === change.stopAt) stop.abort(new StoppedByOperator('stopped with Ctrl-C'));
+      signal.throwIfAborted();
+      const [, plug = '', marked = ''] = /^((?:un)?plug(?: in)?) (K\d)$/.exec(act) ?? [];
+      await simulation.operator.act(marked === '' ? act : `${plug} ${change.plugs?.[marked] ?? marked}`);
       return 'done';
     },
   };
@@ -79,7 +90,7 @@ export async function circuitStep(
       underTest,
       journal: { append },
       clock,
-      signal: new AbortController().signal,
+      signal: stop.signal,
       operator,
       known: { 'rated-current': underTest.rated.current, 'rated-voltage': underTest.rated.voltage },
       tried: {},
