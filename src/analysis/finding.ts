@@ -33,6 +33,15 @@ export function findingNamed(findings: readonly Finding[], name: string): Findin
   return findings.find((finding) => finding.name === name);
 }
 
+/**
+ * Expanded uncertainty, 95 %. Of an interval that reaches further to one side, that side's: what is judged or
+ * written by one number must not promise more than the interval does. Null where there is no interval.
+ */
+export function expandedOf({ value, interval }: Pick<Finding, 'value' | 'interval'>): number | null {
+  if (interval === null || typeof value !== 'number') return null;
+  return Math.max(value - interval[0], interval[1] - value);
+}
+
 interface Circumstances {
   readonly step: number | null;
   readonly note?: string;

@@ -1,3 +1,4 @@
+import { expandedOf } from '../analysis/finding.js';
 import { formatQuantity, formatUncertain } from '../quantity/format-quantity.js';
 import type { Expected } from '../record/baseline.js';
 import type { Compared } from './compare.js';
@@ -51,10 +52,9 @@ export function requirementInWords(expected: Expected, compared: Compared): stri
 
 /** The value alone, to the digits that it deserves: `18.14 mΩ`, `at least 4 A`, `hiccup`. */
 export function valueInWords(finding: Comparable): string {
-  const { value, dimension, interval, bound } = finding;
+  const { value, dimension, bound } = finding;
   if (typeof value === 'string' || dimension === null) return String(value);
-  const expanded = interval === null ? undefined : (interval[1] - interval[0]) / 2;
-  const text = formatUncertain(value, expanded, dimension);
+  const text = formatUncertain(value, expandedOf(finding) ?? undefined, dimension);
   return `${bound === undefined ? '' : 'at least '}${text.value} ${text.unit}`;
 }
 

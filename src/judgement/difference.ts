@@ -1,4 +1,4 @@
-import type { Finding } from '../analysis/finding.js';
+import { expandedOf, type Finding } from '../analysis/finding.js';
 import type { Dimension, Ratio } from '../quantity/quantity.js';
 
 /** A finding as far as it can be compared; one that a record keeps of an earlier run is enough. */
@@ -52,7 +52,7 @@ function isMeasured(finding: Comparable): finding is Measured {
  */
 export function differenceOf(before: Measured, after: Measured): Difference {
   const value = after.value - before.value;
-  const expanded = together(halfWidth(before), halfWidth(after));
+  const expanded = together(expandedOf(before), expandedOf(after));
   const earlier = Math.abs(before.value);
   const bounded = before.bound !== undefined || after.bound !== undefined;
   return {
@@ -61,15 +61,11 @@ export function differenceOf(before: Measured, after: Measured): Difference {
     standardUncertainty: together(before.standardUncertainty, after.standardUncertainty),
     expanded,
     normalizedError: bounded || expanded === null || expanded === 0 ? null : value / expanded,
-    share: earlier > (halfWidth(before) ?? 0) ? value / earlier : null,
+    share: earlier > (expandedOf(before) ?? 0) ? value / earlier : null,
   };
 }
 
 /** Root of the sum of squares; one that is not known adds nothing. */
 function together(one: number | null, other: number | null): number | null {
   return one === null && other === null ? null : Math.hypot(one ?? 0, other ?? 0);
-}
-
-function halfWidth({ interval }: Comparable): number | null {
-  return interval === null ? null : (interval[1] - interval[0]) / 2;
 }

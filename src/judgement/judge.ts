@@ -1,4 +1,4 @@
-import { type Finding, findingNamed } from '../analysis/finding.js';
+import { expandedOf, type Finding, findingNamed } from '../analysis/finding.js';
 import type { RunHeader } from '../record/run-header.js';
 import { effectiveDegreesOfFreedom } from '../statistics/effective-freedom.js';
 import { decide } from '../statistics/guarded-decision.js';
@@ -41,7 +41,7 @@ function decideQuantity(
   const shown = decide({
     value: finding.value,
     standardUncertainty: Math.hypot(finding.standardUncertainty ?? 0, limit.standardUncertainty),
-    expanded: Math.hypot(halfWidth(finding), limit.expanded),
+    expanded: Math.hypot(expandedOf(finding) ?? 0, limit.expanded),
     requirement: { kind, limit: limit.value },
     ...(limit.standardUncertainty === 0 ? freedomOf(finding) : {}),
   });
@@ -60,10 +60,6 @@ function decideQuantity(
     probability: finding.standardUncertainty === null ? null : shown.probability,
     note: limit.standardUncertainty === 0 ? '' : 'the limit was measured too, and its uncertainty counts',
   };
-}
-
-function halfWidth({ interval }: Finding): number {
-  return interval === null ? 0 : (interval[1] - interval[0]) / 2;
 }
 
 /** The probability goes by the same distribution as the interval. */

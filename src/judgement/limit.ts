@@ -1,4 +1,4 @@
-import { type Finding, findingNamed } from '../analysis/finding.js';
+import { expandedOf, type Finding, findingNamed } from '../analysis/finding.js';
 import { dimensionOfFinding } from '../analysis/finding-names.js';
 import { ratedOf } from '../analysis/rated.js';
 import { formatQuantity, formatShare } from '../quantity/format-quantity.js';
@@ -68,7 +68,7 @@ function shareOf(
     value: whole.value * written.ratio,
     missing: '',
     standardUncertainty: (whole.standardUncertainty ?? 0) * ratio,
-    expanded: whole.interval === null ? 0 : ((whole.interval[1] - whole.interval[0]) / 2) * ratio,
+    expanded: (expandedOf(whole) ?? 0) * ratio,
     ...(whole.bound === undefined ? {} : { bound: whole.bound }),
   };
 }

@@ -1,4 +1,4 @@
-import type { Finding } from '../analysis/finding.js';
+import { expandedOf, type Finding } from '../analysis/finding.js';
 import { formatUncertain, type UncertainText } from '../quantity/format-quantity.js';
 
 /** A finding in three columns: value, expanded uncertainty, unit; a word stands alone in the first. */
@@ -6,8 +6,7 @@ export function columnsOf(finding: Finding): UncertainText {
   if (finding.dimension === null || typeof finding.value === 'string') {
     return { value: String(finding.value), uncertainty: '', unit: '' };
   }
-  const expanded = finding.interval === null ? undefined : (finding.interval[1] - finding.interval[0]) / 2;
-  return formatUncertain(finding.value, expanded, finding.dimension);
+  return formatUncertain(finding.value, expandedOf(finding) ?? undefined, finding.dimension);
 }
 
 /** `5.088 ± 0.018 A`. */

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { inWords, measured } from '../../src/analysis/finding.js';
+import { expandedOf, inWords, measured } from '../../src/analysis/finding.js';
 
 describe('a measured finding', () => {
   it('combines its contributions and covers 95 % at the effective degrees of freedom', () => {
@@ -16,6 +16,18 @@ describe('a measured finding', () => {
     expect((high - low) / 2 / 0.5).toBeLessThan(2.042);
     expect((high + low) / 2).toBeCloseTo(10, 12);
     expect(found).toMatchObject({ note: '', step: 2, budget, factors: [] });
+  });
+});
+
+describe('one number for an interval', () => {
+  it.each([
+    [10, [9, 11], 1],
+    [10, [9, 14], 4],
+    [10, [4, 11], 6],
+    ['hiccup', null, null],
+    [10, null, null],
+  ] as const)('of %j within %j is %j: never less than either side', (value, interval, expanded) => {
+    expect(expandedOf({ value, interval })).toBe(expanded);
   });
 });
 

@@ -42,6 +42,13 @@ describe('a requirement on a finding', () => {
     expect(decide(requirement, [finding('usable-current', value, 0.026)]).outcome).toBe(outcome);
   });
 
+  it('goes by the side to which a lopsided interval reaches further', () => {
+    const rise: Finding = { ...finding('temperature-rise', 36, 1), interval: [34, 42] };
+    // Half the width would be 4 K, and 40 K would pass though it may be 42 K.
+    expect(decide(atMost(40.5), [rise], 'temperature-rise').outcome).toBe('undecided');
+    expect(decide(atMost(42), [rise], 'temperature-rise').outcome).toBe('conforms');
+  });
+
   it('reads as a person says it', () => {
     expect(decide(atLeast(4), []).requirement).toBe('at least 4 A');
     expect(decide(atMost(0.02), [], 'droop-resistance').requirement).toBe('at most 20 mΩ');
