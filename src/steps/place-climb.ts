@@ -1,3 +1,4 @@
+import type { Clock } from '../clock/clock.js';
 import { count, quantity } from '../files/building-blocks.js';
 import type { Amperes, Ratio, Seconds } from '../quantity/quantity.js';
 import { longestDwell } from './dwell.js';
@@ -41,9 +42,10 @@ export interface Climb {
 }
 
 /**
- * Climbs through the same set-points on each pass, every place that the pass reaches read at each. Where the
- * whole no longer holds, the load goes off, the voltage must come back, and the first set-point is taken once
- * more: a module that has latched off while others go on shows there.
+ * Climbs through the same set-points on each pass, every place that the pass reaches read at each, and holds
+ * the last one where it is told to. Where the whole no longer holds, be it on the way or while it is held, the
+ * load goes off, the voltage must come back, and the first set-point is taken once more: a module that has
+ * latched off while others go on shows there.
  */
 export async function climb(
   context: StepContext,
@@ -51,7 +53,7 @@ export async function climb(
   { taps, of }: Pass,
   plan: Climb,
 ): Promise<{ readonly dropped: Amperes | undefined }> {
-  const { load } = context.bench;
+  const { bench, clock, journal, tried } = context;
   const voltage = openCircuitVoltage(context);
   const take = (current: Amperes, phase: Climb['phase'] | 'proof', dwell = plan.dwell) =>
     points.take({
@@ -63,48 +65,43 @@ export async function climb(
       wanted: { taps },
       judge: phase === 'proof' ? () => 'measured' : holds(voltage, plan.sag, current),
     });
-  await load.unload();
-  await load.inputOn();
+  await bench.load.unload();
+  await bench.load.inputOn();
   let dropped: Amperes | undefined;
-  for (const current of setPoints(plan)) {
-    if (current >= plan.below) break;
-    const { outcome } = await take(current, plan.phase);
+  for (const { current, dwell } of setPoints(plan, clock)) {
+    const { outcome } = await take(current, plan.phase, dwell);
     if (outcome === 'held') {
-      context.tried.held = Math.max(current, context.tried.held ?? current);
+      tried.held = Math.max(current, tried.held ?? current);
       continue;
     }
     dropped = current;
-    context.tried.dropped = Math.min(current, context.tried.dropped ?? current);
-    context.journal.append({
-      event: 'notice',
-      text: 'the circuit did not hold this point; it goes no higher',
-    });
+    tried.dropped = Math.min(current, tried.dropped ?? current);
+    journal.append({ event: 'notice', text: 'the circuit did not hold this point; it goes no higher' });
     const back = await comeBack(context, points, voltage * (1 - plan.sag), patience);
     if (back === 'stayed-off') throw new ModuleStaysOffError(false);
-    await load.unload();
-    await load.inputOn();
+    await bench.load.unload();
+    await bench.load.inputOn();
     await take(plan.from, 'proof');
     break;
   }
-  if (dropped === undefined && plan.hold !== undefined) await holdLast(context, plan.hold, take, plan);
-  await load.unload();
-  await load.inputOff();
+  await bench.load.unload();
+  await bench.load.inputOff();
   return { dropped };
 }
 
-async function holdLast(
-  { clock }: StepContext,
-  hold: NonNullable<Climb['hold']>,
-  take: (current: Amperes, phase: Climb['phase'], dwell: Seconds) => Promise<unknown>,
-  { to, below, phase }: Climb,
-): Promise<void> {
-  const end = clock.now() + hold.for;
-  while (to < below && clock.now() < end) await take(to, phase, hold.every);
-}
-
-function setPoints({ from, to, points }: Climb): readonly Amperes[] {
-  return Array.from({ length: points }, (_, index) =>
+/** The way up, as far as an earlier pass saw it held; then the last one again and again while it shall be held. */
+function* setPoints(
+  { from, to, points, dwell, below, hold }: Climb,
+  clock: Clock,
+): Generator<{ readonly current: Amperes; readonly dwell: Seconds }> {
+  for (let index = 0; index < points; index += 1) {
     // The last one exactly: rounding must not carry it beyond what the bench allows.
-    index === points - 1 ? to : from + ((to - from) * index) / (points - 1),
-  );
+    const current = index === points - 1 ? to : from + ((to - from) * index) / (points - 1);
+    if (current >= below) return;
+    yield { current, dwell };
+  }
+  if (hold === undefined) return;
+  for (const end = clock.now() + hold.for; clock.now() < end;) {
+    yield { current: to, dwell: Math.min(hold.every, end - clock.now()) };
+  }
 }

@@ -11,6 +11,8 @@ import { provePlaces } from './prove-places.js';
 
 const readingTime = 0.1;
 const day: Seconds = 24 * 3600;
+/** Nothing is read between two looks, so nothing guards the group meanwhile. */
+const longestBetween: Seconds = 60;
 /** Of the smallest label: the more the better it is read across a ballast, and any of them must carry it alone. */
 const provingShare = 0.6;
 
@@ -33,9 +35,10 @@ export const sharingLog = defineStep({
       least: 0,
       most: day,
     }).prefault('0 s'),
-    every: quantity('time', 'one look each so often while it is held', { above: 0, most: 3600 }).prefault(
-      '10 s',
-    ),
+    every: quantity('time', 'one look each so often while it is held', {
+      above: 0,
+      most: longestBetween,
+    }).prefault('10 s'),
     prove: z
       .boolean()
       .default(true)

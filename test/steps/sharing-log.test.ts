@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { module } from '../bench/group-bench.js';
+import { stepKinds } from '../../src/steps/index.js';
 import { circuitStep } from './circuit-step.js';
 
 const parameters = { to: '6 A', points: 3, dwell: '100 ms', readings: 2 };
@@ -112,6 +113,34 @@ describe('a sharing-log', () => {
     const last = step.the('point-began').filter(({ set }) => set.current === 6);
     expect(last.length).toBeGreaterThanOrEqual(6);
     expect((last.at(-1)?.t ?? 0) - (last[0]?.t ?? 0)).toBeGreaterThan(45);
+  });
+
+  it('takes the load off as soon as the group no longer holds what it is held at, and waits for it', async () => {
+    const warming = ['K1', 'K2', 'K3'].map((name) =>
+      module(name, 12.34, {
+        limit: { style: 'hiccup', current: 2.2, period: 0.8 },
+        thermal: { riseAtRated: 40, timeConstant: 120, ambient: 23, limitPerKelvin: -0.005 },
+        ratedCurrent: 2,
+      }),
+    );
+    const step = await circuitStep(
+      'sharing-log',
+      { ...parameters, from: '2 A', prove: false, hold: '1 h', every: '10 s' },
+      { modules: warming },
+    );
+    expect(step.error).toBeUndefined();
+    const outcomes = step.the('point-ended').map(({ outcome }) => outcome);
+    expect(outcomes.length).toBeGreaterThan(5);
+    expect(outcomes.filter((outcome) => outcome === 'dropped').length).toBeLessThanOrEqual(2);
+    expect(step.the('recovery').map(({ outcome }) => outcome)).toEqual(['came-back']);
+    expect(step.the('point-began').at(-1)).toMatchObject({ phase: 'proof', set: { current: 2 } });
+    expect(step.the('input').at(-1)).toMatchObject({ state: 'off' });
+  });
+
+  it('never leaves a group unwatched for longer than a minute', () => {
+    const [log] = stepKinds.filter(({ kind }) => kind === 'sharing-log');
+    expect(log?.parameters.safeParse({ ...parameters, every: '60 s' }).success).toBe(true);
+    expect(log?.parameters.safeParse({ ...parameters, every: '61 s' }).success).toBe(false);
   });
 });
 
