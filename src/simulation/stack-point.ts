@@ -62,8 +62,7 @@ function stringOf(modules: readonly SimulatedModule[], parts: readonly Part[], l
 
 /**
  * Folding-back modules that have collapsed give no more than their short-circuit current until the string
- * asks for less. Undefined where there are none, or where the load leaves one some of its voltage: then it
- * rests on its fold, which has one point only.
+ * asks for less. Undefined where there are none, or where they can rest nowhere but where all others can.
  */
 function fallenString(
   modules: readonly SimulatedModule[],
@@ -81,7 +80,23 @@ function fallenString(
     const voltage = point.links[place]?.voltage ?? 0;
     return curve !== undefined && voltage > 0 && voltage < knee(curve).voltage;
   });
-  return isOnItsFold ? undefined : point;
+  return isOnItsFold ? onItsFold(modules, parts, law) : point;
+}
+
+/**
+ * Where the load leaves a collapsed module some of its voltage, it rests on its fold. A load that sinks a
+ * current and cannot be filled is a resistor there, and a resistor meets the string at one point only.
+ */
+function onItsFold(
+  modules: readonly SimulatedModule[],
+  parts: readonly Part[],
+  law: LoadLaw,
+): StringPoint | undefined {
+  if (law.kind !== 'current') return undefined;
+  const { current, leastVoltage, leads } = law;
+  const unfilled: LoadLaw = { kind: 'resistance', resistance: leastVoltage / current, leads };
+  const point = stringPoint(linksOf(modules, parts), unfilled);
+  return point.current < current ? point : undefined;
 }
 
 function fallenCurve(part: Part): ModuleCurve | undefined {

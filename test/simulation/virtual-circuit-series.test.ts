@@ -80,6 +80,21 @@ describe('a collapsed module in a stack', () => {
     expect(voltagesOf(under(world, 0.5, 4))[1]).toBeGreaterThan(12);
   });
 
+  it('among others that all fold back stays down with them, warm or cooling, until the load is eased', () => {
+    const thermal = { riseAtRated: 35, timeConstant: 600, ambient: 23, limitPerKelvin: -0.002 };
+    const limit: ModuleLimit = { style: 'foldback', current: 3.7, shortCircuit: 1 };
+    const world = worldOf('series', three({ limit, thermal, ratedCurrent: 3, reverseDiode: true }));
+    expect(under(world, 3.5, 1).moduleVoltage).toBeGreaterThan(36);
+    for (let at = 600; at <= 7200; at += 600) {
+      const moment = seen(world, at);
+      expect(moment.modules.map(({ phase }) => phase)).toEqual(['limiting', 'limiting', 'limiting']);
+      // The load, which cannot fill itself, is some tenths of an ohm: 1 V and 35 mΩ for 3.5 A.
+      expect(moment.current).toBeLessThan(1.5);
+      expect(moment.loadVoltage).toBeCloseTo(moment.current / 3.5, 9);
+    }
+    expect(under(world, 0.5, 7201).moduleVoltage).toBeGreaterThan(36);
+  });
+
   it('and an unplugged one are the same to the others; plugged in again it comes up by itself', () => {
     const world = worldOf('series', three({ reverseDiode: true }));
     under(world, 2, 1);
@@ -180,6 +195,30 @@ describe('any stack at any moment', () => {
             expect(Number.isFinite(own.voltage) && Number.isFinite(own.current)).toBe(true);
             if (modules[place]?.reverseDiode === true) expect(own.voltage).toBeGreaterThan(-0.9);
           }
+        }
+      }),
+      { numRuns: 300 },
+    );
+  });
+
+  it('one module in it alone does as it would without a stack', () => {
+    fc.assert(
+      fc.property(module, acts, (drawn, played) => {
+        const own = brick('K1', drawn.openCircuitVoltage, { ...drawn, ballast: 0, earth: 'isolated' });
+        const worlds = [worldOf('single', [own]), worldOf('series', [own])] as const;
+        let at = 1;
+        for (const [act, elapsed] of played) {
+          for (const world of worlds) {
+            if (act === 'absent' || act === 'present') world.setInput(act, at, 'K1');
+            else if (typeof act === 'number')
+              world.setLoad({ input: 'on', mode: 'current', setCurrent: act }, at);
+            else world.setLoad({ input: 'on', mode: 'voltage', setVoltage: act.volts }, at);
+          }
+          at += elapsed;
+          const [alone, stacked] = [seen(worlds[0], at), seen(worlds[1], at)];
+          expect(stacked.modules[0]?.phase).toBe(alone.modules[0]?.phase);
+          expect(Math.abs(stacked.moduleVoltage - alone.moduleVoltage)).toBeLessThan(1e-6);
+          expect(Math.abs(stacked.current - alone.current)).toBeLessThan(1e-6);
         }
       }),
       { numRuns: 300 },
