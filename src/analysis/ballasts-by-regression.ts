@@ -2,9 +2,8 @@ import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Ohms, Ratio } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { LinearCombination, type LinearCombinationFit } from '../statistics/linear-combination.js';
-import { coverageFactor } from '../statistics/student-t.js';
-import { combine, type Contribution } from '../statistics/uncertainty-budget.js';
-import { type Finding, measured } from './finding.js';
+import { combine, type Contribution, expandedFor } from '../statistics/uncertainty-budget.js';
+import { expandedOf, type Finding, measured } from './finding.js';
 import { type GroupLook, meterOf } from './module-currents.js';
 import { promised, promisedErrors } from './promised-errors.js';
 
@@ -76,9 +75,9 @@ export function ballastsByRegression(
 /** A resistance that is known no better than this is not known. */
 const vague: Ratio = 0.15;
 
-function isTold({ value, interval }: Finding): boolean {
-  const expanded = interval === null ? 0 : (interval[1] - interval[0]) / 2;
-  return Number(value) > 0 && expanded <= vague * Number(value);
+function isTold(finding: Finding): boolean {
+  const value = Number(finding.value);
+  return value > 0 && (expandedOf(finding) ?? 0) <= vague * value;
 }
 
 const notToldApart: BallastsFound = {
@@ -140,9 +139,7 @@ function agrees(
   { coverage, beyond }: Demand,
 ): boolean {
   if (ballast === undefined) return true;
-  const { standardUncertainty, degreesOfFreedom } = combine(budget);
-  const expanded =
-    standardUncertainty === 0 ? 0 : standardUncertainty * coverageFactor(degreesOfFreedom, coverage);
+  const expanded = expandedFor(combine(budget), coverage);
   const allowed = ballast.uncertainty + beyond * ballast.resistance + arithmetic * ballast.resistance;
   return Math.abs(Number(value) - ballast.resistance) <= expanded + allowed;
 }

@@ -1,7 +1,8 @@
 import type { Amperes } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
-import { kelvins, lossModelOf, ratedAmperes, risesBudget, riseSeen, type Soaked } from './derating.js';
+import { lossModelOf, risesBudget, riseSeen, type Soaked } from './derating.js';
 import { type Finding, measured } from './finding.js';
+import { kelvins, ratedAmperes } from './in-words.js';
 import { riseAt } from './loss-model.js';
 import { timesLonger } from './ten-kelvin-rule.js';
 

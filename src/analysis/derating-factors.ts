@@ -1,7 +1,8 @@
 import type { RunHeader } from '../record/run-header.js';
 import { allowedInAir } from './ambient-line.js';
-import { degrees, percent, type Soaked } from './derating.js';
+import { type Soaked } from './derating.js';
 import type { Factor } from './finding.js';
+import { degrees, givenPercent } from './in-words.js';
 
 /** The procedure's margin, and what it must stand for: whatever nothing else of the derating covers. */
 export function marginFactor({ derating }: RunHeader, soaked: Soaked | undefined): Factor {
@@ -27,7 +28,7 @@ export function ambientFactor({ derating, modules }: RunHeader): Factor {
   const factor = allowedInAir(line.expected, line);
   const [expected, fullTo, at] = [degrees(line.expected), degrees(line.fullTo), degrees(line.at)];
   if (factor === 1) return { name, factor, reason: `${expected} expected, full load up to ${fullTo}` };
-  const falling = `full load up to ${fullTo}, falling to ${percent(line.fallingTo)} at ${at}`;
+  const falling = `full load up to ${fullTo}, falling to ${givenPercent(line.fallingTo)} at ${at}`;
   return line.expected > line.at
     ? { name, factor, reason: `${expected} expected: ${falling}, and nothing beyond` }
     : { name, factor, reason: `${expected} expected: ${falling}` };

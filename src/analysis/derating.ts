@@ -1,8 +1,8 @@
-import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Amperes, Celsius, Kelvins } from '../quantity/quantity.js';
+import type { Amperes, Celsius } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import type { Contribution } from '../statistics/uncertainty-budget.js';
 import type { Finding } from './finding.js';
+import { amps, givenPercent } from './in-words.js';
 import type { LossModel, RiseSeen } from './loss-model.js';
 import { promised } from './promised-errors.js';
 
@@ -68,8 +68,8 @@ export function risesBudget({ rise }: Soaked, sensitivity: number): readonly Con
 /** `losses as the square of the current`, and which side that errs on for this current. */
 export function lossesInWords({ fixed }: LossModel, current: Amperes, soaked: Soaked): string {
   const square = 'as the square of the current';
-  const losses = fixed === 0 ? `losses ${square}` : `losses ${percent(fixed)} fixed, the rest ${square}`;
-  const from = `soaked at ${amperes(soaked.current)}`;
+  const losses = fixed === 0 ? `losses ${square}` : `losses ${givenPercent(fixed)} fixed, the rest ${square}`;
+  const from = `soaked at ${amps(soaked.current)}`;
   if (Math.abs(current / soaked.current - 1) < asSoaked) return from;
   if (current > soaked.current) return `${from}, ${losses}${fixed === 0 ? ', the cautious side here' : ''}`;
   return `${from}, ${losses}${fixed === 0 ? ', not the cautious side here: standing losses cool less' : ''}`;
@@ -77,25 +77,3 @@ export function lossesInWords({ fixed }: LossModel, current: Amperes, soaked: So
 
 /** Currents this close are the same for a temperature. */
 const asSoaked = 0.005;
-
-export function amperes(current: Amperes): string {
-  return formatQuantity(current, 'current', { significant: 3 });
-}
-
-export function kelvins(rise: Kelvins): string {
-  return formatQuantity(rise, 'temperature-difference', { significant: 3 });
-}
-
-/** What a label says, as it says it; sums of labels without the digits that adding makes. */
-export function ratedAmperes(current: Amperes): string {
-  return formatQuantity(Number(current.toPrecision(6)), 'current');
-}
-
-/** Temperatures that a file gave are shown as given; those worked out, to a tenth of a degree. */
-export function degrees(temperature: Celsius): string {
-  return formatQuantity(Math.round(temperature * 10) / 10, 'temperature');
-}
-
-export function percent(ratio: number): string {
-  return formatQuantity(Number(ratio.toPrecision(4)), 'ratio');
-}

@@ -3,8 +3,8 @@ import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Ratio, Watts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { type Finding, inWords } from './finding.js';
+import { amps, percent } from './in-words.js';
 import type { ModuleLine } from './module-lines.js';
-import { amps, percent } from './shares.js';
 
 /** Of a resistor's rating: what it may be loaded with for years in still air, by the usual rule of thumb. */
 const reserve: Ratio = 0.5;

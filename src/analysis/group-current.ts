@@ -1,12 +1,12 @@
-import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Ratio } from '../quantity/quantity.js';
 import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
+import { amps } from './in-words.js';
 import type { GroupLook } from './module-currents.js';
 import { promised, promisedErrors } from './promised-errors.js';
 import type { Saturated } from './saturation.js';
-import { amps, extremesOf } from './shares.js';
+import { extremesOf } from './shares.js';
 
 /**
  * `group-current`: what the circuit of several modules holds. Where it was seen to drop out it is the
@@ -35,7 +35,7 @@ export function groupCurrent(
     ],
     {
       step: highest.step,
-      note: noted(`nothing dropped up to ${formatQuantity(highest.set, 'current', { significant: 3 })}`),
+      note: noted(`nothing dropped up to ${amps(highest.set)}`),
     },
   );
   return { ...finding, bound: 'least' };

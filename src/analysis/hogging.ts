@@ -2,10 +2,11 @@ import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Ohms, Ratio, Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { type Finding, inWords } from './finding.js';
+import { amps, percent } from './in-words.js';
 import type { GroupLook } from './module-currents.js';
 import type { ModuleLine } from './module-lines.js';
 import type { Saturated } from './saturation.js';
-import { amps, extremesOf, imbalanceFinding, percent, sumOf } from './shares.js';
+import { extremesOf, imbalanceFinding, sumOf } from './shares.js';
 
 /** What is known of a group when it comes to who hogs the load, and why. */
 export interface Sharing {

@@ -1,10 +1,10 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
-import { coverageFactor } from '../statistics/student-t.js';
-import { combine } from '../statistics/uncertainty-budget.js';
+import { combine, expandedFor } from '../statistics/uncertainty-budget.js';
 import { ballastsByRegression } from './ballasts-by-regression.js';
 import type { Finding } from './finding.js';
+import { amps } from './in-words.js';
 import { budgetOf, type GroupLook } from './module-currents.js';
 import { isComplete } from './place-looks.js';
 
@@ -85,9 +85,7 @@ function worstSum(header: RunHeader, looks: readonly GroupLook[]): Sum | undefin
   for (const look of looks) {
     const sum = look.currents.reduce((added, { current }) => added + current, 0);
     const budget = budgetOf(header, look, { modules: look.currents.map(() => 1), load: -1 });
-    const { standardUncertainty, degreesOfFreedom } = combine(budget);
-    const allowed =
-      standardUncertainty === 0 ? 0 : standardUncertainty * coverageFactor(degreesOfFreedom, 1 - strictLevel);
+    const allowed = expandedFor(combine(budget), 1 - strictLevel);
     const beyond = Math.abs(sum - look.total) / (allowed + arithmetic * Math.max(1, Math.abs(look.total)));
     if (beyond > (worst?.beyond ?? 1)) worst = { sum, total: look.total, beyond };
   }
@@ -95,7 +93,6 @@ function worstSum(header: RunHeader, looks: readonly GroupLook[]): Sum | undefin
 }
 
 function inWords({ sum, total }: Sum): string {
-  const amps = (value: Amperes): string => formatQuantity(value, 'current', { significant: 3 });
   return `the modules' currents add up to ${amps(sum)} where the load takes ${amps(total)}`;
 }
 

@@ -4,7 +4,7 @@ import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence, StepEvidence } from './evidence.js';
 import { type Finding, inWords } from './finding.js';
 import type { LimitTrace } from './limit-trace.js';
-import type { Verdict } from './limit-verdict.js';
+import { droopAlone, type Verdict } from './limit-verdict.js';
 
 /**
  * `limit-style`: what the overload that a search watched speaks for, and what a trace at constant voltage
@@ -92,8 +92,6 @@ const fewestSamples = 3;
 const collapsed = 0.5;
 const nothing = 0.05;
 const limitSized = 0.4;
-/** The part of the fall beyond which the droop is all of it; a limit just met takes the rest. */
-const droopAlone = 0.8;
 
 function overloadOf({ set, samples }: PointEvidence): Overload {
   return {

@@ -1,9 +1,9 @@
-import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Ohms, Volts } from '../quantity/quantity.js';
 import { mean } from '../statistics/checked.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence, StepEvidence } from './evidence.js';
-import type { Verdict } from './limit-verdict.js';
+import { volts } from './in-words.js';
+import { droopAlone, type Verdict } from './limit-verdict.js';
 
 /** What the points of a trace at constant voltage speak for. */
 export interface LimitTrace extends Verdict {
@@ -28,8 +28,6 @@ interface Traced extends TracedPoint {
 
 /** Held at a voltage and found below this part of it, the module gives nothing. */
 const gone = 0.5;
-/** The part of the fall beyond which the droop is all of it; a limit just met takes the rest. */
-const droopAlone = 0.8;
 /** A fall by less than this is regulation, whatever the droop is. */
 const regulating = 0.01;
 const fewestPoints = 3;
@@ -167,8 +165,4 @@ function neverRises(points: readonly Traced[], slack: Amperes): boolean {
     const before = points[index - 1];
     return before === undefined || current <= before.current + slack;
   });
-}
-
-function volts(voltage: Volts): string {
-  return formatQuantity(voltage, 'voltage', { significant: 3 });
 }

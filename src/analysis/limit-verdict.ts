@@ -4,3 +4,6 @@ export interface Verdict {
     'latch-off' | 'hiccup' | 'constant-power' | 'constant-current' | 'foldback' | 'undetermined';
   readonly because: string;
 }
+
+/** The part of a fall beyond which the droop is all of it; a limit just met takes the rest. */
+export const droopAlone = 0.8;

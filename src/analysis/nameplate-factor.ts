@@ -1,14 +1,7 @@
 import type { Amperes } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
-import {
-  amperes,
-  type Cap,
-  degrees,
-  highestRiseSeen,
-  ratedAmperes,
-  type Soaked,
-  temperatureLimit,
-} from './derating.js';
+import { type Cap, highestRiseSeen, type Soaked, temperatureLimit } from './derating.js';
+import { amps, degrees, ratedAmperes } from './in-words.js';
 
 /**
  * Never above the nameplate; but where the procedure allows it after a soak, up to the current at which a
@@ -32,9 +25,9 @@ export function nameplateFactor(
   const proof = proofOf(derating, soaked);
   if (typeof proof === 'string') return capped(`not above ${label}: ${proof}`);
   if (proof.current <= rated) {
-    return capped(`not above ${label}: it was soaked at no more than ${amperes(proof.current)}`);
+    return capped(`not above ${label}: it was soaked at no more than ${amps(proof.current)}`);
   }
-  const shown = `at ${amperes(proof.current)} a soak settled below ${degrees(proof.limit)}`;
+  const shown = `at ${amps(proof.current)} a soak settled below ${degrees(proof.limit)}`;
   if (proof.current >= current) {
     const reason = `above ${label}, as the procedure allows: ${shown}`;
     return { name: 'nameplate', reason, current, sets: undefined };

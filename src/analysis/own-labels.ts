@@ -1,7 +1,8 @@
 import type { Amperes, Ratio } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { combine } from '../statistics/uncertainty-budget.js';
-import { type Cap, amperes, ratedAmperes } from './derating.js';
+import { type Cap } from './derating.js';
+import { amps, ratedAmperes } from './in-words.js';
 import { budgetOf, type GroupLook } from './module-currents.js';
 
 /** What a group's recommendation must mind: no module carries more than its own label says, however they share. */
@@ -28,7 +29,7 @@ export function withinOwnLabels(header: RunHeader, held: readonly GroupLook[]): 
     const { module, most } = first;
     return {
       name: 'own label',
-      reason: `beyond ${amperes(most)} ${module.name} alone may carry more than its own ${ratedAmperes(module.rated.current)}`,
+      reason: `beyond ${amps(most)} ${module.name} alone may carry more than its own ${ratedAmperes(module.rated.current)}`,
       current: most,
       sets: `the label of ${module.name} sets it, which carries most`,
     };

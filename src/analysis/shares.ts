@@ -4,6 +4,7 @@ import type { Amperes, Ratio } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { combine, type Contribution } from '../statistics/uncertainty-budget.js';
 import { type Finding, measured } from './finding.js';
+import { amps, percent } from './in-words.js';
 import { budgetOf, type GroupLook } from './module-currents.js';
 
 /**
@@ -94,13 +95,4 @@ export function sumOf({ currents }: GroupLook): Amperes {
 export function extremesOf({ currents }: GroupLook): { readonly most: string; readonly least: string } {
   const falling = [...currents].sort((one, other) => other.current - one.current);
   return { most: falling[0]?.module ?? '', least: falling.at(-1)?.module ?? '' };
-}
-
-export function amps(current: Amperes): string {
-  return formatQuantity(current, 'current', { significant: 3 });
-}
-
-/** To a whole percent, from ten on; else to two digits. */
-export function percent(ratio: Ratio): string {
-  return formatQuantity(ratio, 'ratio', { significant: Math.abs(ratio) >= 0.9995 ? 3 : 2 });
 }

@@ -1,7 +1,7 @@
-import { formatQuantity } from '../quantity/format-quantity.js';
 import { predictLine } from '../statistics/line-fit.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
+import { volts } from './in-words.js';
 import type { LimitTrace } from './limit-trace.js';
 import { moduleVoltageErrors, promised, promisedErrors } from './promised-errors.js';
 import { lineOverCurrent } from './sound-line.js';
@@ -35,9 +35,7 @@ export function shortCircuitFindings(
   const { instrument: voltage, leads } = moduleVoltageErrors(header);
   const scatter = Math.max(fit.residualDeviation, current.resolution);
   const { value } = predictLine(fit, 0);
-  const [high, low] = [lowest.at(0), lowest.at(-1)].map((point) =>
-    formatQuantity(point?.voltage ?? 0, 'voltage', { significant: 3 }),
-  );
+  const [high, low] = [lowest.at(0), lowest.at(-1)].map((point) => volts(point?.voltage ?? 0));
   return [
     measured(
       'short-circuit-current',

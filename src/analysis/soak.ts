@@ -1,9 +1,9 @@
-import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Celsius, Kelvins, Ratio } from '../quantity/quantity.js';
 import { combine, type Contribution, rectangular } from '../statistics/uncertainty-budget.js';
 import type { Soaked } from './derating.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
+import { amps, degrees } from './in-words.js';
 import { promised, promisedErrors } from './promised-errors.js';
 import type { SettledTemperature, TimeConstant } from './settled-temperature.js';
 import { type SoakSeen, soaksSeen } from './soak-seen.js';
@@ -78,7 +78,7 @@ function riseOf(evidence: Evidence, seen: SoakSeen): Rise | undefined {
   const others = [...thermometerBudget(evidence, to, rise, ambient.from), ...ambient.budget];
   const settled = settling !== undefined && settling.left <= unrisen * Math.abs(rise);
   const note = [
-    `at ${formatQuantity(seen.current, 'current', { significant: 3 })}: ` +
+    `at ${amps(seen.current)}: ` +
       `${settling === undefined ? 'read' : 'settles at'} ${degrees(to)} in air of ${degrees(ambient.temperature)}`,
     ...reachedNote(settling, settled, rise),
     ...(seen.limit !== undefined && to > seen.limit ? [`above its limit of ${degrees(seen.limit)}`] : []),
@@ -185,8 +185,4 @@ function timeConstantFinding(
   const finding = measured('thermal-time-constant', 'time', value, [budget], { step });
   const factor = Math.exp(combine([budget]).expanded / value);
   return { ...finding, interval: [value / factor, value * factor] };
-}
-
-function degrees(temperature: Celsius): string {
-  return formatQuantity(Math.round(temperature * 10) / 10, 'temperature');
 }

@@ -1,16 +1,16 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
-import { coverageFactor } from '../statistics/student-t.js';
-import { combine } from '../statistics/uncertainty-budget.js';
+import { combine, expandedFor } from '../statistics/uncertainty-budget.js';
 import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, inWords, measured } from './finding.js';
 import { groupCurrent } from './group-current.js';
+import { amps } from './in-words.js';
 import { type StackLook, stackLooks, sumBudget, sumUpTo } from './module-voltages.js';
 import { isComplete } from './place-looks.js';
 import { promised, promisedErrors } from './promised-errors.js';
-import { amps } from './shares.js';
+
 import { howTheStackFailed, weakestModule } from './weakest-module.js';
 
 /** Beyond this a DC voltage may not be touched: ES1 of IEC 62368-1 (from memory; a secondary source for SELV agrees). */
@@ -71,11 +71,8 @@ function worstSum(
   for (const look of looks) {
     if (!isComplete(look, header) || look.kind === 'after' || look.outcome === 'dropped') continue;
     const sum = sumUpTo(look, places);
-    const { standardUncertainty, degreesOfFreedom } = combine(
-      sumBudget(header, look, { upTo: places, lessOutput: true }),
-    );
-    const allowed =
-      standardUncertainty === 0 ? 0 : standardUncertainty * coverageFactor(degreesOfFreedom, 1 - strictLevel);
+    const budget = sumBudget(header, look, { upTo: places, lessOutput: true });
+    const allowed = expandedFor(combine(budget), 1 - strictLevel);
     const beyond = Math.abs(sum - look.output) / (allowed + 1e-9 * Math.max(1, Math.abs(look.output)));
     if (beyond > (worst?.beyond ?? 1)) worst = { look, sum, beyond };
   }

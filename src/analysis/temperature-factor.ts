@@ -1,16 +1,14 @@
 import type { Amperes } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import {
-  amperes,
   type Cap,
-  degrees,
   highestRiseSeen,
-  kelvins,
   lossesInWords,
   lossModelOf,
   type Soaked,
   temperatureLimit,
 } from './derating.js';
+import { amps, degrees, kelvins } from './in-words.js';
 import { currentAtRise, riseAt } from './loss-model.js';
 
 /**
@@ -31,7 +29,7 @@ export function temperatureFactor(
       : unchanged(`no soak was run: nothing shows that it stays below ${degrees(limit)}`);
   }
   const seen = highestRiseSeen(soaked);
-  const rose = `a rise of at most ${kelvins(seen.rise)} at ${amperes(soaked.current)}`;
+  const rose = `a rise of at most ${kelvins(seen.rise)} at ${amps(soaked.current)}`;
   if (limit === undefined) return unchanged(`no limit of temperature was given to hold against ${rose}`);
   const air = derating.ambient?.expected ?? soaked.ambient;
   if (air === undefined) {
@@ -39,14 +37,14 @@ export function temperatureFactor(
   }
   const model = lossModelOf(derating);
   const rise = riseAt(current, seen, model);
-  const sum = `${degrees(air)} and at most ${kelvins(rise)} at ${amperes(current)} make ${degrees(air + rise)}`;
+  const sum = `${degrees(air)} and at most ${kelvins(rise)} at ${amps(current)} make ${degrees(air + rise)}`;
   if (air + rise <= limit) {
     return unchanged(`${sum}, within ${degrees(limit)}; ${lossesInWords(model, current, soaked)}`);
   }
   const fitting = Math.min(current, currentAtRise(limit - air, seen, model));
   const way =
     fitting > 0
-      ? `${amperes(fitting)} stays within ${degrees(limit)}`
+      ? `${amps(fitting)} stays within ${degrees(limit)}`
       : `no current stays within ${degrees(limit)}`;
   return {
     name: 'temperature',

@@ -1,6 +1,5 @@
 import type { Evidence } from './evidence.js';
 import {
-  degrees,
   lossesInWords,
   lossModelOf,
   risesBudget,
@@ -9,6 +8,7 @@ import {
   temperatureLimit,
 } from './derating.js';
 import { type Finding, measured } from './finding.js';
+import { degrees } from './in-words.js';
 import { currentAtRise } from './loss-model.js';
 import { promised, promisedErrors } from './promised-errors.js';
 

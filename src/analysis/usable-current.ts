@@ -1,8 +1,8 @@
-import { formatQuantity } from '../quantity/format-quantity.js';
 import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
 import type { Soaked } from './derating.js';
 import { type Finding, measured } from './finding.js';
+import { amps } from './in-words.js';
 import { promised, promisedErrors } from './promised-errors.js';
 import { gone, latched } from './recovery.js';
 import { thermalLimit } from './thermal-limit.js';
@@ -59,7 +59,6 @@ function highestHeld(evidence: Evidence, held: readonly CurvePoint[], latch: str
   const highest = held.at(-1);
   if (highest === undefined) return undefined;
   const current = promisedErrors(evidence.header, 'load', 'current');
-  const tried = formatQuantity(highest.set, 'current', { significant: 3 });
   const finding = measured(
     'usable-current',
     'current',
@@ -69,7 +68,7 @@ function highestHeld(evidence: Evidence, held: readonly CurvePoint[], latch: str
       promised(`${current.of}, offset`, current.offset),
       promised(`${current.of}, resolution`, current.resolution),
     ],
-    { step: highest.step, note: `at least this much: no limit was met up to ${tried}${latch}` },
+    { step: highest.step, note: `at least this much: no limit was met up to ${amps(highest.set)}${latch}` },
   );
   return { finding: { ...finding, bound: 'least' }, setBy: 'highest-tried' };
 }

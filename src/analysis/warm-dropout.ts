@@ -4,6 +4,7 @@ import { rectangular } from '../statistics/uncertainty-budget.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, StepEvidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
+import { amps } from './in-words.js';
 import { promised, promisedErrors } from './promised-errors.js';
 
 /**
@@ -28,7 +29,6 @@ export function warmDropout(evidence: Evidence): Finding | undefined {
     .reduce((most, { current }) => Math.max(most, current), 0);
   const value = (held + dropped.current) / 2;
   const current = promisedErrors(evidence.header, 'load', 'current');
-  const shown = (amps: Amperes): string => formatQuantity(amps, 'current', { significant: 3 });
   const after = formatQuantity(dropped.after, 'time', { significant: 2 });
   return measured(
     'usable-current',
@@ -42,8 +42,8 @@ export function warmDropout(evidence: Evidence): Finding | undefined {
     {
       step: dropped.step,
       note:
-        `warm it drops out at ${shown(dropped.current)}, after ${after}; ` +
-        (held > 0 ? `a soak held ${shown(held)}` : 'no soak has shown what it holds when warm'),
+        `warm it drops out at ${amps(dropped.current)}, after ${after}; ` +
+        (held > 0 ? `a soak held ${amps(held)}` : 'no soak has shown what it holds when warm'),
     },
   );
 }

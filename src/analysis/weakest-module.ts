@@ -1,10 +1,9 @@
-import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Ratio, Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { type Finding, inWords } from './finding.js';
+import { amps, percent, volts } from './in-words.js';
 import type { StackLook } from './module-voltages.js';
 import { isComplete } from './place-looks.js';
-import { amps, percent } from './shares.js';
 
 /** Of its voltage with no load; a module that lost more has collapsed. */
 const collapsed: Ratio = 0.3;
@@ -118,8 +117,4 @@ function sagsAt(looks: readonly StackLook[], { modules }: StackLook): readonly S
     if (idle === undefined || idle <= 0) return [];
     return [{ module, idle, volts: own, sag: (idle - own) / idle }];
   });
-}
-
-function volts(value: Volts): string {
-  return formatQuantity(value, 'voltage', { significant: 3 });
 }

@@ -40,6 +40,14 @@ export function combine(contributions: readonly Contribution[]): CombinedUncerta
   };
 }
 
+/** Expanded uncertainty for another coverage than 95 %, by Student's t (JCGM 100:2008, G.3.2). */
+export function expandedFor(
+  { standardUncertainty, degreesOfFreedom }: CombinedUncertainty,
+  coverage: number,
+): number {
+  return standardUncertainty === 0 ? 0 : standardUncertainty * coverageFactor(degreesOfFreedom, coverage);
+}
+
 /**
  * Standard uncertainty of a value known only to lie within ± `halfWidth`, anywhere there alike:
  * halfWidth/√3 (JCGM 100:2008, 4.3.7).

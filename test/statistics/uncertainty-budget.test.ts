@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { coverageFactor } from '../../src/statistics/student-t.js';
 import {
   combine,
+  expandedFor,
   interval,
   rectangular,
   type Contribution,
@@ -46,6 +47,16 @@ describe('an uncertainty budget', () => {
   it('is refused when it has no lines, or a line that says nothing', () => {
     expect(() => combine([])).toThrow(/there are no components/);
     expect(() => combine([{ ...gain, uncertainty: Number.NaN }])).toThrow(/NaN/);
+  });
+});
+
+describe('an expanded uncertainty for another coverage', () => {
+  it('is wider the more it is to cover, and nothing of what is known exactly', () => {
+    const combined = combine([scatter, gain]);
+    expect(expandedFor(combined, 0.95)).toBeCloseTo(combined.expanded, 12);
+    // Many degrees of freedom: 3.29 standard uncertainties for 99.9 % of a normal distribution (from memory).
+    expect(expandedFor(combine([gain]), 0.999)).toBeCloseTo(4 * 3.29, 1);
+    expect(expandedFor(combine([{ ...gain, uncertainty: 0 }]), 0.999)).toBe(0);
   });
 });
 
