@@ -33,6 +33,9 @@ const safely: Ratio = 0.95;
 const leastRoom: Ratio = 0.05;
 /** Points between two, at most. */
 const mostExtra = 5;
+/** Of the open-circuit voltage, from one point to the next where nobody knows yet what the module gives. */
+const approach: Ratio = 0.005;
+const mostApproaching = 4;
 
 /** What flowed at a voltage. */
 interface Traced {
@@ -54,7 +57,6 @@ export class Trace {
   readonly #points: Points;
   readonly #openCircuit: Volts;
   readonly #traced: Traced[] = [];
-  readonly #allowed: Amperes;
   #on = false;
 
   constructor(parameters: TraceParameters, context: StepContext) {
@@ -62,7 +64,6 @@ export class Trace {
     this.#context = context;
     this.#points = new Points(context);
     this.#openCircuit = openCircuitVoltage(context);
-    this.#allowed = Math.min(parameters.ceiling, context.limits.current.value);
   }
 
   /** Whatever happens, the load is told to end as it began: input off, constant current, 0 A. */
@@ -84,11 +85,35 @@ export class Trace {
 
   async #down(): Promise<void> {
     const { from, to, points } = this.#parameters;
+    if (!(await this.#approach(from))) return;
     for (let index = 0; index < points; index += 1) {
       const share = index / (points - 1);
       const voltage = share === 1 ? to : from + (to - from) * share;
       if (!(await this.#mayGoTo(voltage)) || !(await this.#point(voltage))) return;
     }
+  }
+
+  /**
+   * To where the trace begins in small steps, until something flows that says how the current grows; whether
+   * there is more to trace. Not needed where a step before has seen the module drop out within what is allowed.
+   */
+  async #approach(from: Volts): Promise<boolean> {
+    const { dropped } = this.#context.tried;
+    if (dropped !== undefined && dropped <= this.#allowedAt(from)) return true;
+    for (let step = 1; step <= mostApproaching; step += 1) {
+      const voltage = this.#openCircuit * (1 - step * approach);
+      if (voltage <= from) return true;
+      if (!(await this.#point(voltage))) return false;
+      if ((this.#traced.at(-1)?.current ?? 0) > leastRoom * this.#allowedAt(voltage)) return true;
+    }
+    return true;
+  }
+
+  /** The ceiling, or less where the bench allows no more, or its power at that voltage. */
+  #allowedAt(voltage: Volts): Amperes {
+    const { current, power } = this.#context.limits;
+    const byPower = voltage > 0 ? power.value / voltage : Number.POSITIVE_INFINITY;
+    return Math.min(this.#parameters.ceiling, current.value, byPower);
   }
 
   /** One point, and the rest after it; whether there is more to trace. */
@@ -110,7 +135,7 @@ export class Trace {
       this.#on = false;
     } else {
       this.#traced.push({ voltage, current: seen.current.maximum });
-      if (seen.current.maximum > this.#allowed) {
+      if (seen.current.maximum > this.#allowedAt(voltage)) {
         this.#note('the module gives more than is allowed; the trace ends here');
         return false;
       }
@@ -133,16 +158,18 @@ export class Trace {
       const before = this.#traced.at(-2) ?? { voltage: this.#openCircuit, current: 0 };
       const ahead = currentAhead(before, last);
       const expected = ahead.at(voltage);
-      if (expected <= this.#allowed) return true;
-      const room = safely * this.#allowed - last.current;
-      if (extra === mostExtra || room < leastRoom * this.#allowed) {
+      const allowed = this.#allowedAt(voltage);
+      if (expected <= allowed) return true;
+      // At a higher voltage the same power is less current.
+      const next = Math.min(safely * allowed, safely * this.#allowedAt(last.voltage));
+      if (extra === mostExtra || next - last.current < leastRoom * allowed) {
         this.#note(
           `at ${formatQuantity(voltage, 'voltage', { significant: 3 })} the module would give about ` +
             `${formatQuantity(expected, 'current', { significant: 3 })}, more than is allowed; the trace ends here`,
         );
         return false;
       }
-      if (!(await this.#point(ahead.whereIs(safely * this.#allowed)))) return false;
+      if (!(await this.#point(ahead.whereIs(next)))) return false;
     }
   }
 

@@ -19,11 +19,18 @@ function traceOf({ the }: Stage): readonly { readonly volts: number; readonly am
     });
 }
 
+/** A bench on which a step before has seen where the module drops out. */
+async function searched(change: StageChange = exact): Promise<Stage> {
+  const there = await stage(change);
+  there.tried.dropped = 5.3;
+  return there;
+}
+
 const atRest = { input: 'off', mode: 'current', setCurrent: 0 };
 
 describe('the trace of a limit', () => {
   it('goes down evenly from just below open circuit to the least voltage of the load', async () => {
-    const there = await stage({ ...exact, file: 'nursery-constant-current' });
+    const there = await searched({ ...exact, file: 'nursery-constant-current' });
     await there.perform('limit-trace', { points: 5 });
     const trace = traceOf(there);
     // The second is one between, to see how the current goes on.
@@ -36,7 +43,7 @@ describe('the trace of a limit', () => {
   });
 
   it('does not lock a folding-back module up, which a constant-current load would', async () => {
-    const there = await stage({ ...exact, file: 'nursery-foldback' });
+    const there = await searched({ ...exact, file: 'nursery-foldback' });
     await there.perform('limit-trace', { points: 8 });
     const amps = traceOf(there).map((point) => point.amps);
     for (const [index, current] of amps.entries()) {
@@ -48,7 +55,7 @@ describe('the trace of a limit', () => {
   });
 
   it('watches each point long enough to see a module try again', async () => {
-    const there = await stage(exact);
+    const there = await searched(exact);
     await there.perform('limit-trace', { points: 3 });
     for (const { point } of there.the('point-began').filter(({ phase }) => phase === 'trace')) {
       const currents = there
@@ -74,14 +81,14 @@ describe('the trace of a limit', () => {
   });
 
   it('lets the module rest between two points, and steps down without a pause where none is asked for', async () => {
-    const resting = await stage({ ...exact, file: 'nursery-constant-current' });
+    const resting = await searched({ ...exact, file: 'nursery-constant-current' });
     await resting.perform('limit-trace', { from: '14.9 V', to: '14.8 V', points: 3, watch: '0 s' });
     expect(resting.the('input').map(({ state }) => state)).toEqual([
       'off',
       ...['on', 'off', 'on', 'off', 'on', 'off'],
       'off',
     ]);
-    const hurrying = await stage({ ...exact, file: 'nursery-constant-current' });
+    const hurrying = await searched({ ...exact, file: 'nursery-constant-current' });
     await hurrying.perform('limit-trace', {
       from: '14.9 V',
       to: '14.8 V',
@@ -94,7 +101,7 @@ describe('the trace of a limit', () => {
 
   it('changes the mode, and the voltage from whatever it was, only with the input off', async () => {
     const seen: string[] = [];
-    const there = await stage({ ...exact, file: 'nursery-constant-current' });
+    const there = await searched({ ...exact, file: 'nursery-constant-current' });
     there.simulation.world.onStep(() => {
       const { input, mode, setVoltage } = there.simulation.world.load;
       seen.push(`${input} ${mode} ${setVoltage > 0 ? 'some' : 'none'}`);
@@ -143,7 +150,7 @@ describe('the trace of a limit', () => {
   });
 
   it('takes a point between where the current grew so steeply that the next could be too much', async () => {
-    const there = await stage({ ...exact, file: 'nursery-constant-current' });
+    const there = await searched({ ...exact, file: 'nursery-constant-current' });
     await there.perform('limit-trace', { points: 2, watch: '0 s' });
     const volts = traceOf(there).map((point) => point.volts);
     expect(volts).toEqual([expect.closeTo(14.91, 2), expect.closeTo(14.78, 2), 1]);
@@ -162,17 +169,35 @@ describe('the trace of a limit', () => {
     expect(there.the('notice').at(-1)?.text).toMatch(/more than is allowed; the trace ends here$/);
   });
 
-  it('ends after its first point where that is already more than was allowed', async () => {
-    const there = await stage({ ...exact, file: 'nursery-constant-current' });
-    await there.perform('limit-trace', { ceiling: '5 A' });
-    expect(traceOf(there)).toHaveLength(1);
-    expect(there.the('notice').map(({ text }) => text)).toEqual([
-      'the module gives more than is allowed; the trace ends here',
-    ]);
+  it('begins in small steps where nobody knows the limit, and never lets more flow than was allowed', async () => {
+    for (const change of [
+      { file: 'nursery-constant-current' },
+      { module: { droopResistance: 0.02, limit: { style: 'hiccup', current: 20, period: 0.8 } } },
+    ] as const) {
+      const there = await stage({ ...exact, ...change });
+      await there.perform('limit-trace', { ceiling: '5 A' });
+      const trace = traceOf(there);
+      expect(trace[0]?.volts).toBeCloseTo(15.134, 3);
+      expect(Math.max(...trace.map(({ amps }) => amps))).toBeGreaterThan(4);
+      expect(Math.max(...trace.map(({ amps }) => amps))).toBeLessThan(5);
+      expect(there.the('notice').at(-1)?.text).toMatch(/more than is allowed; the trace ends here$/);
+    }
   });
 
-  it('is stopped by the guard of the power, and leaves the load as it was', async () => {
+  it('ends before the power is more than the bench allows', async () => {
     const there = await stage({ ...exact, file: 'nursery-constant-current', limits: { power: 60 } });
+    await there.perform('limit-trace');
+    const watts = traceOf(there).map(({ volts, amps }) => volts * amps);
+    expect(Math.max(...watts)).toBeGreaterThan(50);
+    expect(Math.max(...watts)).toBeLessThan(60);
+    expect(there.the('notice').at(-1)?.text).toMatch(/more than is allowed; the trace ends here$/);
+    expect(there.simulation.world.load).toMatchObject(atRest);
+  });
+
+  it('is stopped by a guard, and leaves the load as it was', async () => {
+    const there = await stage({ ...exact, file: 'nursery-constant-current', limits: { power: 60 } });
+    // It dropped out early once, and does not any more.
+    there.tried.dropped = 3;
     await expect(there.perform('limit-trace')).rejects.toMatchObject({ code: 'GUARD_TRIPPED' });
     expect(there.simulation.world.load).toMatchObject(atRest);
   });
