@@ -49,14 +49,20 @@ export function groupPoints(branches: readonly Branch[], law: LoadLaw): readonly
 }
 
 function pointAt(branches: readonly Branch[]): (crossing: Pick<Crossing, 'place' | 'values'>) => GroupPoint {
-  return ({ place, values }) => ({
-    busVoltage: place,
-    current: values.reduce((sum, current) => sum + current, 0),
-    branches: branches.map(({ resistance }, index) => {
-      const current = values[index] ?? 0;
+  return ({ place, values }) => {
+    const points = branches.map(({ source, resistance }, index): BranchPoint => {
+      const value = values[index] ?? 0;
+      // The end of a line is not met to the last digit, and less than nothing flows only where it may.
+      const current = letsBack(source) ? value : Math.max(0, value);
       return { current, voltage: resistance === 0 ? place : place + resistance * current };
-    }),
-  });
+    });
+    const current = points.reduce((sum, point) => sum + point.current, 0);
+    return { busVoltage: place, current, branches: points };
+  };
+}
+
+function letsBack(source: Source): boolean {
+  return source.kind === 'module' && source.curve.reverseResistance !== undefined;
 }
 
 /**

@@ -152,6 +152,19 @@ describe('a parallel group', () => {
     expectClose(currentsOf(points[0]), [3, 3]);
   });
 
+  it('of modules that fold back to nothing gives nothing into a short, and never less', () => {
+    for (const current of [3.3483710514010885, 4 * 0.8995753252, 5]) {
+      const nothing: ModuleCurve = { ...brick, limit: { style: 'foldback', current, shortCircuit: 0 } };
+      const [point] = groupPoints([through(0, nothing), through(0.05, nothing)], {
+        kind: 'voltage',
+        voltage: 0,
+        leads: 0,
+      });
+      expect(currentsOf(point)).toEqual([0, 0]);
+      expect(point?.current).toBe(0);
+    }
+  });
+
   it('of constant-power modules follows both hyperbolas', () => {
     const constantPower: ModuleCurve = { ...brick, limit: { style: 'constant-power', current: 5 } };
     const weaker: ModuleCurve = { ...constantPower, limit: { style: 'constant-power', current: 3 } };
@@ -227,6 +240,8 @@ describe('for any group and any load', () => {
             expect(Math.abs(voltage - busVoltage - resistance * own)).toBeLessThan(1e-9);
             const given = source.kind === 'off' ? 0 : currentAtVoltage(source.curve, voltage);
             expect(Math.abs(given - own)).toBeLessThan(tolerance);
+            const letsBack = source.kind === 'module' && source.curve.reverseResistance !== undefined;
+            if (!letsBack) expect(own).toBeGreaterThanOrEqual(0);
           }
         }
       }),
