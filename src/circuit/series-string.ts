@@ -67,19 +67,6 @@ export function stringPoint(links: readonly Link[], law: LoadLaw): StringPoint {
   }
 }
 
-/**
- * What the 0 V rail of each link floats at above the string's 0 V: the sum of what lies below it, the series
- * resistances included.
- */
-export function railVoltages(links: readonly Link[], point: StringPoint): readonly number[] {
-  let rail = 0;
-  return links.map(({ resistance = 0 }, index) => {
-    const own = rail;
-    rail += (point.links[index]?.voltage ?? 0) - resistance * point.current;
-    return own;
-  });
-}
-
 function stops({ source, diode }: Link): boolean {
   return source.kind === 'off' && source.outputResistance === Number.POSITIVE_INFINITY && diode === undefined;
 }

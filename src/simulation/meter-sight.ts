@@ -1,4 +1,6 @@
+import { railVoltages } from '../circuit/rail-voltages.js';
 import type { Ohms, Volts } from '../quantity/quantity.js';
+import { BLEEDER } from './module-curve-of.js';
 import type { MeterPlace } from './probes.js';
 import type { ModuleMoment, Moment, VirtualBench } from './virtual-bench.js';
 
@@ -12,8 +14,6 @@ export interface Sight {
 const PICK_UP: Volts = 0.002;
 /** An ohmmeter cannot measure what has a voltage of its own. */
 const LIVE: Volts = 0.01;
-/** What bleeds the output of a module that is off. */
-const BLEEDER: Ohms = 2200;
 /** The top of the widest range of a usual ohmmeter. */
 const WIDEST_RANGE: Ohms = 120e6;
 
@@ -82,12 +82,9 @@ function aboveEarth(module: string, moment: Moment, bench: VirtualBench): Volts 
 
 /** The 0 V of each module above that of the whole: in a stack each stands on those below it. */
 function zeroRails({ modules }: Moment, { circuit }: VirtualBench): readonly Volts[] {
-  let rail = 0;
-  return modules.map(({ voltage, ballastVoltage }) => {
-    const own = rail;
-    if (circuit === 'series') rail += voltage - ballastVoltage;
-    return own;
-  });
+  return railVoltages(
+    modules.map(({ voltage, ballastVoltage }) => (circuit === 'series' ? voltage - ballastVoltage : 0)),
+  );
 }
 
 function moduleIn({ modules }: Moment, name: string): ModuleMoment {

@@ -1,6 +1,6 @@
 import { type ModuleCurve, knee, withLimitScaled } from '../circuit/module-curve.js';
 import type { SimulatedModule } from '../files/simulation-section.js';
-import type { Kelvins, Ratio, Volts } from '../quantity/quantity.js';
+import type { Kelvins, Ohms, Ratio, Volts } from '../quantity/quantity.js';
 import { limitFactor } from './warming.js';
 
 /**
@@ -8,6 +8,9 @@ import { limitFactor } from './warming.js';
  * under-voltage shutdown, which stands near half to two thirds in practice.
  */
 export const SHUTDOWN_SHARE: Ratio = 0.6;
+
+/** What is across the output of a module that gives nothing: the resistor that discharges its capacitors. */
+export const BLEEDER: Ohms = 2200;
 
 /** The curve a module follows while it is trying, at a rise of temperature. */
 export function curveOf(module: SimulatedModule, rise: Kelvins): ModuleCurve {

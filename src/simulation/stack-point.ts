@@ -3,8 +3,8 @@ import { type ModuleCurve, knee } from '../circuit/module-curve.js';
 import { type Link, type StringPoint, stringPoint } from '../circuit/series-string.js';
 import type { ShockleyDiode } from '../circuit/shockley-diode.js';
 import type { SimulatedModule } from '../files/simulation-section.js';
-import type { Ohms } from '../quantity/quantity.js';
 import { shortedSpans } from './earth-bonds.js';
+import { BLEEDER } from './module-curve-of.js';
 import type { ModulePoint, Part, RestingPoint } from './resting-point.js';
 
 /** A silicon rectifier of some amperes: 0.65 V at 20 mA, 0.82 V at 4 A. */
@@ -13,9 +13,6 @@ export const REVERSE_DIODE: ShockleyDiode = {
   idealityFactor: 1.3,
   temperature: 300,
 };
-
-/** What is across the output of a module that gives nothing: the resistor that discharges its capacitors. */
-const BLEEDER: Ohms = 1000;
 
 /** What two earth bonds are to the modules between them; milliohms of wire are nothing beside their limits. */
 const shorted: LoadLaw = { kind: 'resistance', resistance: 0, leads: 0 };

@@ -1,5 +1,6 @@
 import { imbalanceOf } from '../circuit/imbalance.js';
 import type { LoadLaw } from '../circuit/load-law.js';
+import { railVoltages } from '../circuit/rail-voltages.js';
 import type { Simulation } from '../files/simulation-section.js';
 import type { Amperes, Kelvins, Ratio, Volts } from '../quantity/quantity.js';
 import { type CircuitState, freshCircuit } from './circuit-state.js';
@@ -74,13 +75,12 @@ export function trueCircuit(
     moduleVoltagesAt: (load) => at(load).point.modules.map(({ voltage }) => voltage),
     railVoltagesAt: (load) => {
       const { point } = at(load);
-      let rail = 0;
-      return modules.map(({ ballast }, place) => {
-        const { voltage = 0, through = 0 } = point.modules[place] ?? {};
-        const own = rail;
-        rail += circuit === 'series' ? voltage - through * ballast : 0;
-        return own;
-      });
+      return railVoltages(
+        modules.map(({ ballast }, place) => {
+          const { voltage = 0, through = 0 } = point.modules[place] ?? {};
+          return circuit === 'series' ? voltage - through * ballast : 0;
+        }),
+      );
     },
     dropoutCurrent: (sag) => {
       const least = (1 - sag) * openCircuitVoltage;
