@@ -104,10 +104,14 @@ function branchLine({ source, resistance }: Branch): Line {
   return lowest === undefined ? [above] : [lowest, ...higher, above];
 }
 
-/** Without droop the regulated line is one voltage for all currents; only a ballast makes a slope of it. */
+/**
+ * Without droop, or with so little that it is lost in the last digit of the voltage, the regulated line is one
+ * voltage for all currents; only a ballast makes a slope of it.
+ */
 function stiffPiece(curve: ModuleCurve): readonly CurvePiece[] {
-  if (curve.droopResistance > 0) return [];
-  return [{ kind: 'line', high: { voltage: curve.openCircuitVoltage, current: 0 }, low: knee(curve) }];
+  const low = knee(curve);
+  if (low.voltage < curve.openCircuitVoltage) return [];
+  return [{ kind: 'line', high: { voltage: curve.openCircuitVoltage, current: 0 }, low }];
 }
 
 function stretchOf(piece: CurvePiece, resistance: number): readonly Stretch[] {

@@ -1,4 +1,5 @@
-import { type Branch, branchCurrents } from './shared-load.js';
+import { imbalanceOf } from './imbalance.js';
+import { type UnlimitedBranch, branchCurrents } from './shared-load.js';
 
 /** A value and its expanded uncertainty: it lies within value ± expanded. */
 export interface Uncertain {
@@ -68,22 +69,20 @@ export function worstSharing(group: BallastedGroup): WorstSharing {
   if (ranges.some(({ resistance }) => resistance[0] <= 0)) {
     return { imbalance: Number.POSITIVE_INFINITY, mostCurrent: group.load };
   }
-  const mean = group.load / ranges.length;
-  let worst: WorstSharing = { imbalance: 0, mostCurrent: mean };
+  let worst: WorstSharing = { imbalance: 0, mostCurrent: group.load / ranges.length };
   for (const most of ranges.keys()) {
     for (const least of ranges.keys()) {
       if (most === least) continue;
       const currents = branchCurrents(worstCorner(ranges, most, least), group.load);
-      const mostCurrent = Math.max(...currents);
-      const imbalance = (mostCurrent - Math.min(...currents)) / mean;
-      if (imbalance > worst.imbalance) worst = { imbalance, mostCurrent };
+      const imbalance = imbalanceOf(currents);
+      if (imbalance > worst.imbalance) worst = { imbalance, mostCurrent: Math.max(...currents) };
     }
   }
   return worst;
 }
 
 /** In which `most` takes as much more than `least` as it can. */
-function worstCorner(ranges: readonly Range[], most: number, least: number): readonly Branch[] {
+function worstCorner(ranges: readonly Range[], most: number, least: number): readonly UnlimitedBranch[] {
   const lowBus = (ranges[most]?.resistance[0] ?? 0) <= (ranges[least]?.resistance[1] ?? 0);
   return ranges.map((range, index) => {
     if (index === most) return strong(range);
@@ -93,12 +92,12 @@ function worstCorner(ranges: readonly Range[], most: number, least: number): rea
 }
 
 /** A branch at the corner of its range where it gives most. */
-function strong({ voltage, resistance }: Range): Branch {
+function strong({ voltage, resistance }: Range): UnlimitedBranch {
   return { voltage: voltage[1], resistance: resistance[0] };
 }
 
 /** A branch at the corner of its range where it gives least. */
-function weak({ voltage, resistance }: Range): Branch {
+function weak({ voltage, resistance }: Range): UnlimitedBranch {
   return { voltage: voltage[0], resistance: resistance[1] };
 }
 

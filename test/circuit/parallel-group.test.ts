@@ -135,6 +135,11 @@ describe('a parallel group', () => {
     expectClose(currentsOf(point), [2, 1]);
   });
 
+  it('behind ballast does so too where the droop is lost in the last digit of the voltage', () => {
+    const stiff: ModuleCurve = { ...brick, droopResistance: 1e-20 };
+    expectClose(currentsOf(groupPoints([through(0.05, stiff), through(0.1, stiff)], sinks(3))[0]), [2, 1]);
+  });
+
   it('loaded with exactly the sum of its limits still stands at the knee', () => {
     const limited: ModuleCurve = { ...brick, limit: { style: 'constant-current', current: 5.28 } };
     const points = groupPoints(

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { type Branch, branchCurrents } from '../../src/circuit/shared-load.js';
+import { type UnlimitedBranch, branchCurrents } from '../../src/circuit/shared-load.js';
 import {
   type BallastedGroup,
   type GroupModule,
@@ -10,7 +10,7 @@ import {
 } from '../../src/circuit/worst-sharing.js';
 
 /** Found by halves and not by Millman: the bus at which the branches give just what the load takes. */
-function byHalves(branches: readonly Branch[], load: number): readonly number[] {
+function byHalves(branches: readonly UnlimitedBranch[], load: number): readonly number[] {
   const given = (bus: number) =>
     branches.map(({ voltage, resistance }) => Math.max(0, (voltage - bus) / resistance));
   let [low, high] = [-1e6, Math.max(...branches.map(({ voltage }) => voltage))];
@@ -23,8 +23,8 @@ function byHalves(branches: readonly Branch[], load: number): readonly number[] 
 }
 
 /** Each end of each range with each end of every other. */
-function corners(group: BallastedGroup): readonly (readonly Branch[])[] {
-  return rangesOf(group).reduce<readonly (readonly Branch[])[]>(
+function corners(group: BallastedGroup): readonly (readonly UnlimitedBranch[])[] {
+  return rangesOf(group).reduce<readonly (readonly UnlimitedBranch[])[]>(
     (before, range) =>
       before.flatMap((branches) =>
         range.voltage.flatMap((voltage) =>
