@@ -1,6 +1,5 @@
 /** How an output stands to earth: tied to it, cut off from it, neither, or nobody can tell. */
-export const earthRelations = ['bonded', 'isolated', 'leaky', 'undetermined'] as const;
-export type EarthRelation = (typeof earthRelations)[number];
+export type EarthRelation = 'bonded' | 'isolated' | 'leaky' | 'undetermined';
 
 /** In Ω. */
 export interface EarthThresholds {
