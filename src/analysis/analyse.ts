@@ -58,7 +58,11 @@ export function analyse(evidence: Evidence): readonly Finding[] {
     soaked,
     warm: warmDropout(evidence),
   });
-  const sharing = sharingFindings(evidence, { dropout: dropout[0], held });
+  const sharing = sharingFindings(evidence, {
+    dropout: dropout[0],
+    held,
+    style: wordNamed('limit-style', style),
+  });
   return [
     ...(usable === undefined ? [] : [usable.finding]),
     ...recommendedFindings(evidence, usable, soaked, sharing.ownLabels),
@@ -77,6 +81,11 @@ export function analyse(evidence: Evidence): readonly Finding[] {
     ...isolationFindings(evidence),
     ...answerFindings(evidence),
   ];
+}
+
+function wordNamed(name: string, findings: readonly Finding[]): string | undefined {
+  const value = findingNamed(findings, name)?.value;
+  return typeof value === 'string' ? value : undefined;
 }
 
 function numberNamed(name: string, findings: readonly Finding[]): number | undefined {

@@ -3,7 +3,7 @@ import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Ratio, Watts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { type Finding, inWords } from './finding.js';
-import { amps, percent } from './in-words.js';
+import { amps, givenPercent, percent } from './in-words.js';
 import type { ModuleLine } from './module-lines.js';
 
 /** Of a resistor's rating: what it may be loaded with for years in still air, by the usual rule of thumb. */
@@ -58,7 +58,7 @@ export function recommendedBallast(
     case 'too-costly':
       return inWords('recommended-ballast', 'none', {
         step,
-        note: `${whyNot(outcome, tolerance)}; asked for: ${asked}`,
+        note: whyNot(outcome, { tolerance, asked: `where ${asked} are asked for` }),
       });
   }
 }
@@ -86,20 +86,21 @@ function foundInWords(
   const take =
     rating === undefined ? 'more than one resistor carries' : `take ${formatQuantity(rating, 'power')} ones`;
   return (
-    `${formatQuantity(value, 'resistance')} ± ${percent(tolerance)} in each: ${percent(imbalance)} imbalance at worst at ${amps(load)}, ` +
+    `${formatQuantity(value, 'resistance')} ± ${givenPercent(tolerance)} in each: at worst ${percent(imbalance)} imbalance at ${amps(load)}, ` +
     `up to ${watts} of heat in one (${take}), costs ${formatQuantity(voltageCost, 'voltage', { significant: 2 })}`
   );
 }
 
 function whyNot(
   outcome: Extract<BallastOutcome, { kind: 'too-coarse' | 'too-costly' }>,
-  tolerance: Ratio,
+  { tolerance, asked }: { readonly tolerance: Ratio; readonly asked: string },
 ): string {
-  const left = percent(outcome.imbalance);
+  // Three digits: what misses the limit by little must not read as if it met it.
+  const left = formatQuantity(outcome.imbalance, 'ratio', { significant: 3 });
   if (outcome.kind === 'too-coarse') {
-    return `resistors of ± ${percent(tolerance)} alone may unbalance them by ${left}: take closer ones`;
+    return `resistors of ± ${givenPercent(tolerance)} alone may unbalance them by ${left} ${asked}: take closer ones`;
   }
   return outcome.largest === 0
-    ? 'not even the smallest resistor leaves enough voltage'
-    : `${formatQuantity(outcome.largest, 'resistance')}, which already costs a tenth of the voltage, still leaves ${left}: the modules are too unlike, choose others`;
+    ? `not even the smallest resistor leaves enough voltage, ${asked}`
+    : `${formatQuantity(outcome.largest, 'resistance')}, more than which would cost a tenth of the voltage, may still leave ${left} ${asked}: the modules are too unlike, choose others`;
 }

@@ -42,7 +42,7 @@ export function hoggingFinding(header: RunHeader, sharing: Sharing): Finding | u
     const why = whyItHogs(sharing, look, { most, least });
     return inWords('hogging-module', most, {
       step,
-      note: `${carries}${why === '' ? '' : `: ${why}`}${then}`,
+      note: `${carries}${why === '' ? '' : ` because ${why}`}${then}`,
     });
   }
   const within = `the imbalance is ${percent(Math.max(0, low))} to ${percent(high)} at ${amps(look.total)}, ${percent(setting)} asked for`;

@@ -26,10 +26,10 @@ export function shareFindings(
     const elsewhere =
       lowest === undefined || lowest.total >= look.total
         ? ''
-        : `; ${percent(there / sumOf(lowest))} of ${amps(lowest.total)}`;
+        : `; ${percent(within(0, there / sumOf(lowest), 1))} of ${amps(lowest.total)}`;
     return measured(`share-of-${module}`, 'ratio', share, budgetOf(header, look, { modules: weights }), {
       step: look.step,
-      note: `${amps(current)} of ${amps(look.total)}${elsewhere}`,
+      note: `${amps(share * look.total)} of ${amps(look.total)}${elsewhere}`,
     });
   });
 }
@@ -75,7 +75,8 @@ function lowestTold(header: RunHeader, curve: readonly GroupLook[]): GroupLook |
 function elsewhereInWords(header: RunHeader, look: GroupLook, curve: readonly GroupLook[]): string {
   const lowest = lowestTold(header, curve);
   const first = curve.find(({ set, step }) => set === look.set && step === look.step);
-  const at = (one: GroupLook): string => percent(imbalanceOf(one.currents.map((each) => each.current)));
+  const at = ({ currents }: GroupLook): string =>
+    percent(within(0, imbalanceOf(currents.map(({ current }) => current)), currents.length));
   const below =
     lowest === undefined || lowest.total >= look.total ? '' : `; ${at(lowest)} at ${amps(lowest.total)}`;
   if (first === undefined || first === look) return below;
@@ -83,8 +84,25 @@ function elsewhereInWords(header: RunHeader, look: GroupLook, curve: readonly Gr
   return `${below}; ${at(first)} when that was reached, ${held} before`;
 }
 
+/** What is nothing reads a little above or below it, and as little beyond all; a note says no more than that. */
+function within(least: number, value: number, most: number): number {
+  return Math.min(most, Math.max(least, value));
+}
+
 function lastTime({ points }: GroupLook): number {
   return Math.max(...points.map(({ t }) => t));
+}
+
+/** What a module carried. */
+export interface Carried {
+  readonly module: string;
+  readonly current: Amperes;
+}
+
+/** Each module's share of the load's current: so that what a reader adds up is what the load takes. */
+export function carriedAt(look: GroupLook): readonly Carried[] {
+  const sum = sumOf(look);
+  return look.currents.map(({ module, current }) => ({ module, current: (current / sum) * look.total }));
 }
 
 export function sumOf({ currents }: GroupLook): Amperes {

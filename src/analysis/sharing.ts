@@ -3,7 +3,8 @@ import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, inWords } from './finding.js';
 import { recommendedBallast } from './group-ballast.js';
-import { groupCurrent, howItFailed } from './group-current.js';
+import { groupCurrent } from './group-current.js';
+import { howItFailed } from './group-failure.js';
 import { heldLooks } from './held-looks.js';
 import { hoggingFinding } from './hogging.js';
 import { currentsAddUp } from './kirchhoff.js';
@@ -24,7 +25,12 @@ const usual = { imbalance: 0.1, tolerance: 0.01 };
  */
 export function sharingFindings(
   evidence: Evidence,
-  found: { readonly dropout: Finding | undefined; readonly held: readonly CurvePoint[] },
+  found: {
+    readonly dropout: Finding | undefined;
+    readonly held: readonly CurvePoint[];
+    /** The `limit-style` of the whole, where it was told. */
+    readonly style: string | undefined;
+  },
 ): { readonly findings: readonly Finding[]; readonly ownLabels?: OwnLabels } {
   const { header } = evidence;
   if (header.circuit !== 'parallel') return { findings: [] };
@@ -49,7 +55,7 @@ export function sharingFindings(
   const lines = moduleLines(header, looks, saturated);
   return {
     findings: [
-      ...present(groupCurrent(evidence, found, howItFailed({ ...found, held, looks, saturated }))),
+      ...present(groupCurrent(evidence, found, howItFailed(header, { ...found, held, looks, saturated }))),
       ...present(hoggingFinding(header, { held, looks, lines, saturated, setting })),
       recommendedBallast(header, lines, {
         load: highest.total,

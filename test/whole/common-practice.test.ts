@@ -56,11 +56,11 @@ describe('two bricks that both read 12.34 V', () => {
     expect(Number(found('group-current')?.value)).toBeGreaterThan(3.6);
     expect(Number(found('group-current')?.value)).toBeLessThan(5);
     expect(found('group-current')?.note).toMatch(
-      /^fails at about what one of them holds: K1 hogs, carried 3\.\d+ A of [34]\.\d+ A, leaves at its limit, and the rest can't carry it/,
+      /^it fails at about what one of them holds: K1 hogs, carried 3\.\d+ A of [34]\.\d+ A, leaves at its limit, and the rest can't carry it/,
     );
     expect(found('hogging-module')).toMatchObject({ value: 'K1' });
     expect(text).toMatch(/^K1 hogs: it carries .* there are only 1\.0 mΩ of ballast in each\.$/m);
-    expect(text).toMatch(/^The group holds [34]\.\d+ ± 0\.\d+ A: fails at about what one of them holds/m);
+    expect(text).toMatch(/^The group holds [34]\.\d+ ± 0\.\d+ A; it fails at about what one of them holds/m);
   });
 
   it('with 50 mΩ in each hold 7 A, and nobody hogs', async () => {
@@ -88,7 +88,7 @@ describe('two bricks that both read 12.34 V', () => {
     );
     expect(found('hogging-module')).toMatchObject({ value: 'K1' });
     expect(found('hogging-module')?.note).toContain('K1 is at its limit beyond');
-    expect(text).toMatch(/^K1 hogs: it carries 9\d % of 4\.\d+ A: .*30 mV above K2/m);
+    expect(text).toMatch(/^K1 hogs: it carries 9\d % of 4\.\d+ A because .*30 mV above K2/m);
   });
 
   it('of which the first latches off: it is named as the one that did not come back', async () => {
@@ -112,6 +112,6 @@ describe('three of them in series through 50 mΩ each', () => {
     expect(found('group-current')?.value).toBeCloseTo(3.5, 1);
     expect(found('float-voltage-of-K3')?.value).toBeCloseTo(24.54, 1);
     expect(found('weakest-module')).toMatchObject({ value: 'none' });
-    expect(text).toMatch(/^The 0 V of K3 floats 24\.\d+ ± 0\.\d+ V above that of the string: /m);
+    expect(text).toMatch(/^The 0 V of K3 floats 24\.\d+ ± 0\.\d+ V above that of the string; /m);
   });
 });
