@@ -84,7 +84,12 @@ function worstSum(header: RunHeader, looks: readonly GroupLook[]): Sum | undefin
   let worst: (Sum & { readonly beyond: number }) | undefined;
   for (const look of looks) {
     const sum = look.currents.reduce((added, { current }) => added + current, 0);
-    const budget = budgetOf(header, look, { modules: look.currents.map(() => 1), load: -1 });
+    // One ohmmeter that is off by as much as was promised puts all of them off alike, and no ballast is wrong.
+    const budget = budgetOf(header, look, {
+      modules: look.currents.map(() => 1),
+      load: -1,
+      ballastsAlike: true,
+    });
     const allowed = expandedFor(combine(budget), 1 - strictLevel);
     const beyond = Math.abs(sum - look.total) / (allowed + arithmetic * Math.max(1, Math.abs(look.total)));
     if (beyond > (worst?.beyond ?? 1)) worst = { sum, total: look.total, beyond };

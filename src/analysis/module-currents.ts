@@ -120,6 +120,8 @@ export function meterOf({ instruments }: RunHeader, place: number): string {
 export interface Weights {
   readonly modules: readonly number[];
   readonly load?: number;
+  /** Whether the ballasts may all be off alike, as those are that one ohmmeter measured. */
+  readonly ballastsAlike?: boolean;
 }
 
 /**
@@ -131,7 +133,7 @@ export interface Weights {
 export function budgetOf(
   header: RunHeader,
   { currents, total, totalScatter }: GroupLook,
-  { modules: weights, load = 0 }: Weights,
+  { modules: weights, load = 0, ballastsAlike = false }: Weights,
 ): readonly Contribution[] {
   const weighted = currents.map((each, index) => ({ ...each, weight: weights[index] ?? 0 }));
   const meters = [...new Set(weighted.map(({ place }) => meterOf(header, place)))];
@@ -140,6 +142,7 @@ export function budgetOf(
     scaled(totalScatter, load),
   ]);
   const drift = Math.hypot(...weighted.map((each) => each.weight * each.drift));
+  const byBallast = weighted.map((each) => each.weight * each.current * each.ballastUncertainty);
   return [
     { name: 'scatter of the readings', kind: 'A', ...scatter },
     ...meters.flatMap((meter) => {
@@ -154,9 +157,11 @@ export function budgetOf(
         ),
       ];
     }),
-    ...weighted.map((each) =>
-      promised(`ballast of ${each.module}`, each.weight * each.current * each.ballastUncertainty),
-    ),
+    ...(ballastsAlike
+      ? [promised('ballasts, all alike', sum(byBallast))]
+      : byBallast.map((uncertainty, index) =>
+          promised(`ballast of ${weighted[index]?.module ?? ''}`, uncertainty),
+        )),
     ...(drift === 0 ? [] : [promised('drift between the passes', drift)]),
     ...(load === 0 ? [] : loadBudget(header, total, load)),
   ];

@@ -36,7 +36,10 @@ function read(change: (places: Record<string, number>, index: number) => Record<
   });
 }
 
-function findingsOf(said: RunHeader, points = read((places) => places)): readonly Finding[] {
+function findingsOf(
+  said: RunHeader,
+  points: readonly CircuitPoint[] = read((places) => places),
+): readonly Finding[] {
   return analyse(circuitEvidence(said, points));
 }
 
@@ -50,6 +53,18 @@ describe('currents that add up to the load’s', () => {
     const findings = findingsOf(header([0.05, 0.05, 0.05]));
     expect(findings.filter(({ name }) => name.startsWith('ballast-of'))).toEqual([]);
     expect(resting(findings)).toHaveLength(5);
+  });
+});
+
+describe('ballasts that are all off by as much as was promised of them', () => {
+  it('are what one ohmmeter makes of them, and nothing is wrong', () => {
+    const six = Object.fromEntries(['K1', 'K2', 'K3', 'K4', 'K5', 'K6'].map((name) => [name, alike]));
+    const said = circuitHeader({
+      circuit: 'parallel',
+      ballasts: Object.fromEntries(Object.keys(six).map((name) => [name, [0.0505, 0.000505] as const])),
+    });
+    const findings = findingsOf(said, sharingPoints(six, loads, 2.4));
+    expect(named(findings, 'share-of-K6')?.value).toBeCloseTo(1 / 6, 6);
   });
 });
 
