@@ -1,12 +1,18 @@
 import { expandedOf } from '../analysis/finding.js';
-import { formatQuantity, formatUncertain } from '../quantity/format-quantity.js';
+import {
+  formatExact,
+  formatQuantity,
+  formatUncertain,
+  type UncertainText,
+} from '../quantity/format-quantity.js';
+import type { Dimension } from '../quantity/quantity.js';
 import type { Expected } from '../record/baseline.js';
 import type { Compared } from './compare.js';
 import type { Comparable, Difference } from './difference.js';
 
 /** `+18.2 ± 0.3 mΩ (+101 %)`; a difference of what is in % is in percentage points. */
 export function differenceInWords({ value, dimension, expanded, share }: Difference): string {
-  const text = formatUncertain(value, expanded ?? undefined, dimension);
+  const text = uncertainText(value, expanded, dimension);
   const unit = dimension === 'ratio' ? 'percentage points' : text.unit;
   const number = value > 0 && Number(text.value) !== 0 ? `+${text.value}` : text.value;
   const plusMinus = text.uncertainty === '' ? '' : ` ± ${text.uncertainty}`;
@@ -50,17 +56,30 @@ export function requirementInWords(expected: Expected, compared: Compared): stri
   }
 }
 
+function uncertainText(value: number, expanded: number | null, dimension: Dimension): UncertainText {
+  return expanded === null ? formatExact(value, dimension) : formatUncertain(value, expanded, dimension);
+}
+
 /** The value alone, to the digits that it deserves: `18.14 mΩ`, `at least 4 A`, `hiccup`. */
 export function valueInWords(finding: Comparable): string {
   const { value, dimension, bound } = finding;
   if (typeof value === 'string' || dimension === null) return String(value);
-  const text = formatUncertain(value, expandedOf(finding) ?? undefined, dimension);
+  const text = uncertainText(value, expandedOf(finding), dimension);
   return `${bound === undefined ? '' : 'at least '}${text.value} ${text.unit}`;
 }
 
-/** `+18.2 ± 0.3 mΩ (+101 %)` for quantities, `from bonded to isolated` for words; empty for what is alone. */
+/**
+ * `+18.2 ± 0.3 mΩ (+101 %)` for quantities, `from bonded to isolated` for words; empty for what is alone. Of
+ * a least value only that can be told what it has certainly moved by: `at least -0.99 A`.
+ */
 export function changeInWords({ before, after, difference }: Compared): string {
-  if (difference !== undefined) return differenceInWords(difference);
+  if (difference !== undefined && before?.bound === undefined && after?.bound === undefined)
+    return differenceInWords(difference);
+  if (difference !== undefined) {
+    const isCertain =
+      before?.bound === undefined ? difference.value > 0 : after?.bound === undefined && difference.value < 0;
+    return isCertain ? `at least ${differenceInWords({ ...difference, expanded: null, share: null })}` : '';
+  }
   if (before === undefined || after === undefined) return '';
   const [was, is] = [valueInWords(before), valueInWords(after)];
   return was === is ? '' : `from ${was} to ${is}`;

@@ -58,6 +58,12 @@ export function formatUncertain(
   };
 }
 
+/** What has no uncertainty, a nominal value or a bound: up to four significant digits, none of them idle. */
+export function formatExact(value: number, dimension: Dimension): UncertainText {
+  const text = formatUncertain(value, undefined, dimension);
+  return { ...text, value: text.value.includes('.') ? text.value.replace(/\.?0+$/, '') : text.value };
+}
+
 /**
  * The largest scale in which the value is at least 1. Times from two minutes on are in minutes or hours
  * where that makes a rounder number of them, or where it is rounded anyway.

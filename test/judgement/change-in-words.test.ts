@@ -1,7 +1,12 @@
 import { describe, expect, it } from 'vitest';
-import { allowedInWords, differenceInWords, valueInWords } from '../../src/judgement/change-in-words.js';
+import {
+  allowedInWords,
+  changeInWords,
+  differenceInWords,
+  valueInWords,
+} from '../../src/judgement/change-in-words.js';
 import { compare } from '../../src/judgement/compare.js';
-import type { Difference } from '../../src/judgement/difference.js';
+import type { Comparable, Difference } from '../../src/judgement/difference.js';
 import type { Dimension } from '../../src/quantity/quantity.js';
 import type { Expected } from '../../src/record/baseline.js';
 import { droopOf, relationOf } from './a-baseline.js';
@@ -22,9 +27,35 @@ describe('a difference', () => {
     [difference(0.0048, 'ratio', 0.0001, 1), '+0.480 ± 0.010 percentage points (+100 %)'],
     [difference(0, 'current', 0.025, 0), '0 ± 25 mA (0 %)'],
     [difference(1e-9, 'current', 0.025, 1e-9), '0 ± 25 mA (0 %)'],
-    [difference(1, 'current', null, null), '+1.000 A'],
+    [difference(1, 'current', null, null), '+1 A'],
   ])('%#: %s', (one, words) => {
     expect(differenceInWords(one)).toBe(words);
+  });
+});
+
+describe('the change of a least value', () => {
+  const bound = 'least' as const;
+  const compared = (before: Comparable, after: Comparable) => {
+    const [one] = compare(
+      { modules: ['K1'], findings: [before] },
+      { modules: ['K1'], findings: [after] },
+      [],
+    ).findings;
+    if (one === undefined) throw new Error('one was compared');
+    return one;
+  };
+
+  it('is told as far as it is certain', () => {
+    const least = { ...droopOf(0.018), bound };
+    expect(changeInWords(compared(droopOf(0.01), least))).toBe('at least +8 mΩ');
+    expect(changeInWords(compared(least, droopOf(0.01)))).toBe('at least -8 mΩ');
+  });
+
+  it('is not told where it may as well be none', () => {
+    const least = { ...droopOf(0.018), bound };
+    expect(changeInWords(compared(least, droopOf(0.03)))).toBe('');
+    expect(changeInWords(compared(droopOf(0.03), least))).toBe('');
+    expect(changeInWords(compared(least, { ...droopOf(0.01), bound }))).toBe('');
   });
 });
 
