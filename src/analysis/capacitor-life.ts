@@ -1,6 +1,6 @@
 import type { Amperes } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
-import { lossModelOf, risesBudget, riseSeen, type Soaked } from './derating.js';
+import { lossesInWords, lossModelOf, risesBudget, riseSeen, type Soaked } from './derating.js';
 import { type Finding, measured } from './finding.js';
 import { kelvins, ratedAmperes } from './in-words.js';
 import { riseAt } from './loss-model.js';
@@ -33,7 +33,7 @@ export function capacitorLifeFindings(
       step: soaked.rise.step,
       note:
         `electrolytics at the recommended current, ${how} than at the nameplate's ${ratedAmperes(rated)}, by the ` +
-        'ten-kelvin rule; a ratio for the same ambient, not a lifetime',
+        `ten-kelvin rule; ${lossesInWords(model, recommended, soaked)}; a ratio for the same ambient, not a lifetime`,
     }),
   ];
 }

@@ -39,9 +39,11 @@ function findingsOf(
   const found = foundIn(step, module, header, limits);
   if (found.kind === 'unproved') return [relation('undetermined', found.why)];
   const { interval } = found.resistance;
-  const towards = `to ${earthPoint(module)}`;
+  const towards = `measured to ${earthPoint(module)}`;
+  const proof =
+    found.relation === 'isolated' ? '; what voltage it withstands, only an insulation test shows' : '';
   return [
-    relation(found.relation, `${towards}; ${reasons[found.relation](interval, limits)}`),
+    relation(found.relation, `${reasons[found.relation](interval, limits)}, ${towards}${proof}`),
     ...resistanceFindings(`earth-resistance${ending}`, found, { step: step.step, note: towards }),
   ];
 }
@@ -50,9 +52,9 @@ const reasons: Readonly<
   Record<EarthRelation, (interval: readonly [Ohms, Ohms], limits: EarthLimits) => string>
 > = {
   bonded: (_interval, { bondedBelow }) => `below ${asSet(bondedBelow)}`,
-  isolated: (_interval, { isolatedAbove }) =>
-    `above ${asSet(isolatedAbove)}; what voltage it withstands, only an insulation test shows`,
-  leaky: () => 'neither bonded nor isolated: something conducts',
+  isolated: (_interval, { isolatedAbove }) => `above ${asSet(isolatedAbove)}`,
+  leaky: (_interval, { bondedBelow, isolatedAbove }) =>
+    `neither below ${asSet(bondedBelow)} nor above ${asSet(isolatedAbove)}`,
   undetermined: ([low, high], { bondedBelow, isolatedAbove }) =>
     high < -bondedBelow
       ? 'it reads below zero: a voltage is in the way'

@@ -78,8 +78,8 @@ function riseOf(evidence: Evidence, seen: SoakSeen): Rise | undefined {
   const others = [...thermometerBudget(evidence, to, rise, ambient.from), ...ambient.budget];
   const settled = settling !== undefined && settling.left <= unrisen * Math.abs(rise);
   const note = [
-    `at ${amps(seen.current)}: ` +
-      `${settling === undefined ? 'read' : 'settles at'} ${degrees(to)} in air of ${degrees(ambient.temperature)}`,
+    `${settling === undefined ? `${degrees(to)} were read` : `it settles at ${degrees(to)}`} in air of ` +
+      `${degrees(ambient.temperature)}, at ${amps(seen.current)}`,
     ...reachedNote(settling, settled, rise),
     ...(seen.limit !== undefined && to > seen.limit ? [`above its limit of ${degrees(seen.limit)}`] : []),
     ...ambient.note,
@@ -173,7 +173,7 @@ function reachedNote(
   if (settling === undefined) return ['still on its way, and too early to tell where to'];
   if (settled) return settling.timeConstant === undefined ? ['no change was seen any more'] : [];
   const reached = Math.max(0, Math.floor((1 - settling.left / Math.abs(rise)) * 100));
-  return [`predicted, not reached: ${reached} % of it were`];
+  return [`predicted, not reached: the soak saw ${reached} % of it`];
 }
 
 /** Never below zero: even on the scale of its logarithm. */

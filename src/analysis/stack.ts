@@ -111,7 +111,7 @@ function stackVoltage(
 function sumInWords(idle: StackLook | undefined, header: RunHeader): string {
   if (idle === undefined) return '';
   const each = idle.modules.map(({ module, volts: own }) => `${module} ${volts(own)}`).join(', ');
-  return `the modules add up to ${volts(sumUpTo(idle, header.modules.length))}: ${each}`;
+  return `the modules add up to ${volts(sumUpTo(idle, header.modules.length))} (${each})`;
 }
 
 /** Each 0 V stands on the modules below it. */
@@ -119,13 +119,14 @@ function floatVoltages(header: RunHeader, idle: StackLook | undefined): readonly
   if (idle === undefined) return [];
   return header.modules.map((module, below) => {
     const value = sumUpTo(idle, below);
-    const budget =
+    const name = `float-voltage-of-${module.name}`;
+    // The lowest is where all others are counted from: 0 V by definition.
+    const finding: Finding =
       below === 0
-        ? [promised('it is where all others are counted from', 0)]
-        : sumBudget(header, idle, { upTo: below, lessOutput: false });
-    const finding = measured(`float-voltage-of-${module.name}`, 'voltage', value, budget, {
-      step: idle.step,
-    });
+        ? { ...inWords(name, '', { step: idle.step }), value, dimension: 'voltage' }
+        : measured(name, 'voltage', value, sumBudget(header, idle, { upTo: below, lessOutput: false }), {
+            step: idle.step,
+          });
     const top = value + (idle.modules[below]?.volts ?? 0);
     return { ...finding, note: floatNote(module, { finding, top, current: idle.current }) };
   });

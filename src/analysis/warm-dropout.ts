@@ -43,7 +43,9 @@ export function warmDropout(evidence: Evidence): Finding | undefined {
       step: dropped.step,
       note:
         `warm it drops out at ${amps(dropped.current)}, after ${after}; ` +
-        (held > 0 ? `a soak held ${amps(held)}` : 'no soak has shown what it holds when warm'),
+        (held > 0
+          ? `a soak held ${amps(held)}`
+          : 'no soak has shown what it holds when warm: soak it at less'),
     },
   );
 }

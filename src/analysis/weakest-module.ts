@@ -24,8 +24,8 @@ export function weakestModule(header: RunHeader, looks: readonly StackLook[]): r
   const collapse = firstCollapse(header, looks);
   const { step } = first;
   if (collapse !== undefined) {
-    const { module, note } = collapse;
-    return [inWords('weakest-module', module, { step: collapse.step, note })];
+    const { module, how } = collapse;
+    return [inWords('weakest-module', module, { step: collapse.step, note: `it ${how}` })];
   }
   const dropped = climb.find(({ outcome }) => outcome === 'dropped');
   if (dropped !== undefined) {
@@ -42,7 +42,7 @@ export function weakestModule(header: RunHeader, looks: readonly StackLook[]): r
     isWeak
       ? inWords('weakest-module', most.module, {
           step,
-          note: `${sags} at ${amps(held.current)}; none dropped`,
+          note: `it sags most, by ${percent(Math.max(0, most.sag))} at ${amps(held.current)}; none dropped`,
         })
       : inWords('weakest-module', 'none', { step, note: `all held up to ${amps(held.current)}; ${sags}` }),
   ];
@@ -50,13 +50,15 @@ export function weakestModule(header: RunHeader, looks: readonly StackLook[]): r
 
 /** For the note of what the string holds. */
 export function howTheStackFailed(header: RunHeader, looks: readonly StackLook[]): string {
-  return firstCollapse(header, looks)?.note ?? '';
+  const collapse = firstCollapse(header, looks);
+  return collapse === undefined ? '' : `${collapse.module} ${collapse.how}`;
 }
 
 interface Collapse {
   readonly module: string;
   readonly step: number;
-  readonly note: string;
+  /** What a sentence says of it: `collapses at 3.60 A …`. */
+  readonly how: string;
 }
 
 /**
@@ -78,8 +80,8 @@ function firstCollapse(header: RunHeader, looks: readonly StackLook[]): Collapse
   );
   const after = held === undefined ? '' : `, it held ${amps(held.current)}`;
   if (worst !== undefined && worst.sag > collapsed) {
-    const note = `collapses at ${at} (${volts(worst.idle)} fall to ${volts(worst.volts)})${after}`;
-    return { module: worst.module, step: dropped.step, note: `${worst.module} ${note}` };
+    const how = `collapses at ${at} (${volts(worst.idle)} fall to ${volts(worst.volts)})${after}`;
+    return { module: worst.module, step: dropped.step, how };
   }
   const others = header.modules.filter(({ name }) => !sags.some(({ module }) => module === name));
   const [only] = others;
@@ -88,7 +90,7 @@ function firstCollapse(header: RunHeader, looks: readonly StackLook[]): Collapse
   return {
     module: only.name,
     step: dropped.step,
-    note: `${only.name} collapses at ${at}: ${rest} kept ${sags.length === 1 ? 'its' : 'their'} voltage when the string dropped out${after}`,
+    how: `collapses at ${at}, as ${rest} kept ${sags.length === 1 ? 'its' : 'their'} voltage when the string dropped out${after}`,
   };
 }
 

@@ -1,4 +1,4 @@
-import { findingNamed } from '../analysis/finding.js';
+import { type Finding, findingNamed } from '../analysis/finding.js';
 import { compareWithBaseline } from '../judgement/compare.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes } from '../quantity/quantity.js';
@@ -32,10 +32,18 @@ function advice(result: Result): readonly string[] {
   const what =
     current > 0 ? `load ${it} continuously with up to ${roundedDown(current)}` : `do not load ${it}`;
   const sentence = endedHow(result).how === 'completed' ? what : `as far as the run went, ${what}`;
-  return [
-    `${sentence.charAt(0).toUpperCase()}${sentence.slice(1)}.`,
-    `It delivers ${inOneLine(usable)}; ${usable.note}.`,
-  ];
+  return [`${capitalised(sentence)}.`, why(usable)];
+}
+
+/** What may be nothing is no delivery: then only the reason is told. */
+function why(usable: Finding): string {
+  return (usable.interval?.[0] ?? 0) > 0
+    ? `It delivers ${inOneLine(usable)}; ${usable.note}.`
+    : `${capitalised(usable.note)}.`;
+}
+
+function capitalised(sentence: string): string {
+  return `${sentence.charAt(0).toUpperCase()}${sentence.slice(1)}`;
 }
 
 /** Which finding moved since the baseline, where there is one, and by how much. */

@@ -1,5 +1,6 @@
 import { allowedInWords, changeInWords, valueInWords } from '../judgement/change-in-words.js';
 import { changesMissed, type Compared, type Comparison } from '../judgement/compare.js';
+import { listed } from './listed.js';
 
 /** What changed and by how much, and what can't be told, in a sentence or a few; the worst first. */
 export function changesInWords({ findings, inNeither }: Comparison): readonly string[] {
@@ -48,8 +49,4 @@ function rightly({ finding, expected, verdict }: Compared): string {
 function rest(kept: number, others: number): string {
   const what = others === 0 ? 'Nothing' : 'Nothing else';
   return `${what} changed beyond its tolerance (${kept} compared).`;
-}
-
-function listed(names: readonly string[]): string {
-  return names.length < 2 ? names.join('') : `${names.slice(0, -1).join(', ')} and ${names.at(-1) ?? ''}`;
 }

@@ -27,7 +27,7 @@ function held(findings: readonly Finding[], what: string): readonly string[] {
   const current = findingNamed(findings, 'group-current');
   if (current === undefined) return [];
   const atLeast = current.bound === 'least' ? 'at least ' : '';
-  return [sentence(`${what} holds ${atLeast}${inOneLine(current)}`, current.note)];
+  return [sentence(`${what} holds ${atLeast}${inOneLine(current)}`, current.note, '; ')];
 }
 
 /** What is wrong with the bench file comes before whatever would have rested on it. */
@@ -36,7 +36,11 @@ function ballasts(findings: readonly Finding[]): readonly string[] {
   return findings
     .filter(({ name }) => name.startsWith(prefix))
     .map((finding) =>
-      sentence(`The ballast of ${finding.name.slice(prefix.length)} is ${inOneLine(finding)}`, finding.note),
+      sentence(
+        `The ballast of ${finding.name.slice(prefix.length)} is ${inOneLine(finding)}`,
+        finding.note,
+        '; ',
+      ),
     );
 }
 
@@ -62,7 +66,7 @@ function wanted(findings: readonly Finding[]): readonly string[] {
   return [
     Number(finding.value) === 0
       ? sentence('No ballast is needed', finding.note)
-      : `Ballast: ${finding.note}.`,
+      : `As ballast take ${finding.note}.`,
   ];
 }
 
@@ -71,10 +75,12 @@ function standing({ modules }: Result['header'], findings: readonly Finding[]): 
   const top = modules.at(-1)?.name ?? '';
   const float = findingNamed(findings, `float-voltage-of-${top}`);
   return [
-    ...(stack === undefined ? [] : [sentence(`It gives ${inOneLine(stack)} with no load`, stack.note)]),
+    ...(stack === undefined ? [] : [sentence(`It gives ${inOneLine(stack)} with no load`, stack.note, '; ')]),
     ...(float === undefined
       ? []
-      : [sentence(`The 0 V of ${top} floats ${inOneLine(float)} above that of the string`, float.note)]),
+      : [
+          sentence(`The 0 V of ${top} floats ${inOneLine(float)} above that of the string`, float.note, '; '),
+        ]),
   ];
 }
 
@@ -87,6 +93,6 @@ function weakest(findings: readonly Finding[]): readonly string[] {
   return [sentence(`The weakest is ${String(finding.value)}`, finding.note)];
 }
 
-function sentence(said: string, note: string): string {
-  return note === '' ? `${said}.` : `${said}: ${note}.`;
+function sentence(said: string, note: string, between = ': '): string {
+  return note === '' ? `${said}.` : `${said}${between}${note}.`;
 }

@@ -1,5 +1,6 @@
 import { type Finding, findingNamed } from '../analysis/finding.js';
 import { inOneLine } from './finding-text.js';
+import { listed } from './listed.js';
 
 /**
  * What one module is for the one who asked: where and how it gives way, how warm it gets, how its output
@@ -9,18 +10,23 @@ export function moduleAnswer(findings: readonly Finding[]): readonly string[] {
   return [...limit(findings), ...shortCircuit(findings), ...warming(findings)];
 }
 
-/** Of each module whose output was looked at, one or several. */
+/** How outputs stand to earth: a sentence for one module, and for those of several that it is the same of. */
 export function earthAnswer(findings: readonly Finding[]): readonly string[] {
-  return findings
-    .filter(({ name }) => /^earth-relation(-of-|$)/.test(name))
-    .map((relation) => {
-      const module = relation.name.slice('earth-relation-of-'.length);
-      const resistance = findingNamed(findings, relation.name.replace('relation', 'resistance'));
-      const whose = module === '' ? 'Its output' : `The output of ${module}`;
-      return `${whose} ${standing[String(relation.value)] ?? 'could not be told'}${measuredAs(resistance)}${relation.note === '' ? '' : `; ${relation.note}`}.`;
-    });
+  const sentences = new Map<string, string[]>();
+  for (const relation of findings.filter(({ name }) => /^earth-relation(-of-|$)/.test(name))) {
+    const resistance = findingNamed(findings, relation.name.replace('relation', 'resistance'));
+    const note = relation.note === '' ? '' : `: ${relation.note}`;
+    const said = `${standing[String(relation.value)] ?? unknown}${measuredAs(resistance)}${note}`;
+    const module = relation.name.slice('earth-relation-of-'.length);
+    sentences.set(said, [...(sentences.get(said) ?? []), module]);
+  }
+  return [...sentences].map(([said, modules]) => {
+    if (modules.length > 1) return `Each output of ${listed(modules)} ${said}.`;
+    return `${modules[0] === '' ? 'Its output' : `The output of ${modules[0] ?? ''}`} ${said}.`;
+  });
 }
 
+const unknown = 'could not be told';
 const standing: Readonly<Record<string, string>> = {
   bonded: 'is tied to earth',
   isolated: 'is isolated from earth',
@@ -30,9 +36,7 @@ const standing: Readonly<Record<string, string>> = {
 
 function measuredAs(resistance: Finding | undefined): string {
   if (resistance === undefined) return '';
-  return resistance.bound === 'least'
-    ? ` (at least ${inOneLine(resistance)})`
-    : ` (${inOneLine(resistance)})`;
+  return ` (${resistance.bound === 'least' ? 'at least ' : ''}${inOneLine(resistance)})`;
 }
 
 /** Where it leaves regulation, where it drops out, and what it does there. */

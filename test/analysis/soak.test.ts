@@ -93,7 +93,7 @@ describe('how warm a soak makes a module', () => {
   it('is over the ambient of the bench file, where it gives one', () => {
     const found = named('temperature-rise', { temperature: warming }, thermometerHeader(room));
     expect(found?.value).toBeCloseTo(37, 3);
-    expect(found?.note).toBe('at 4.00 A: settles at 59 °C in air of 22 °C');
+    expect(found?.note).toBe('it settles at 59 °C in air of 22 °C, at 4.00 A');
     const budget = lines('temperature-rise', { temperature: warming }, thermometerHeader(room));
     expect(budget).toMatchObject({
       'thermometer temperature, gain': expect.closeTo(0.59, 4) as number,
@@ -118,7 +118,7 @@ describe('how warm a soak makes a module', () => {
     const found = named('temperature-rise', { temperature: warming, until: 1080 });
     expect(found?.value).toBeCloseTo(36, 3);
     // 1 − e^(−1.5) is 77.7 %.
-    expect(found?.note).toContain('predicted, not reached: 77 % of it were');
+    expect(found?.note).toContain('predicted, not reached: the soak saw 77 % of it');
     expect(soakedOf(evidence({ temperature: warming, until: 1080 }))).toMatchObject({
       current: 4,
       settled: false,

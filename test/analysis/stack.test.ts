@@ -40,7 +40,7 @@ describe('a stack', () => {
   it('gives the sum of its modules with no load, read at its output', () => {
     expect(found.get('stack-voltage')).toMatchObject({
       value: expect.closeTo(45.6, 9) as number,
-      note: 'the modules add up to 45.60 V: K1 15.20 V, K2 15.10 V, K3 15.30 V',
+      note: 'the modules add up to 45.60 V (K1 15.20 V, K2 15.10 V, K3 15.30 V)',
     });
   });
 
@@ -102,11 +102,11 @@ describe('the weakest module of a stack', () => {
   it('is the one whose voltage collapses first', () => {
     const drop: CircuitPoint = { ...stood(4, { K2: 1.2 }), outcome: 'dropped' };
     const found = findingsOf([unloaded, ...climb.slice(0, 4), drop]);
-    const note = 'K2 collapses at 4.00 A (15.1 V fall to 1.20 V), it held 3.00 A';
-    expect(found.get('weakest-module')).toMatchObject({ value: 'K2', note });
+    const how = 'collapses at 4.00 A (15.1 V fall to 1.20 V), it held 3.00 A';
+    expect(found.get('weakest-module')).toMatchObject({ value: 'K2', note: `it ${how}` });
     expect(found.get('group-current')).toMatchObject({
       value: expect.closeTo(3.5, 9) as number,
-      note: `${note}; held 3.000 A, dropped 4.000 A`,
+      note: `K2 ${how}`,
     });
   });
 
@@ -114,7 +114,7 @@ describe('the weakest module of a stack', () => {
     const soft = evenly(0, 4, 5).map((current) => stood(current, { K3: 15.3 - 0.3 * current }));
     expect(findingsOf(soft).get('weakest-module')).toMatchObject({
       value: 'K3',
-      note: 'K3 sags most, by 7.8 % at 4.00 A; none dropped',
+      note: 'it sags most, by 7.8 % at 4.00 A; none dropped',
     });
   });
 

@@ -71,7 +71,7 @@ describe('the answer', () => {
       bound: 'least',
     };
     expect(answerTo(inWords('earth-relation', 'isolated', { step: 1, note: 'above 1 MΩ' }), open)).toEqual([
-      'Its output is isolated from earth (at least 10.00 MΩ); above 1 MΩ.',
+      'Its output is isolated from earth (at least 10 MΩ): above 1 MΩ.',
     ]);
     expect(
       answerTo(
@@ -80,8 +80,12 @@ describe('the answer', () => {
       ),
     ).toEqual([
       'The output of K1 is tied to earth.',
-      'The output of K2 may or may not be tied to earth, which could not be told; the leads were not proved.',
+      'The output of K2 may or may not be tied to earth, which could not be told: the leads were not proved.',
     ]);
+    const alike = ['K1', 'K2', 'K3'].map((name) =>
+      inWords(`earth-relation-of-${name}`, 'isolated', { step: 1 }),
+    );
+    expect(answerTo(...alike)).toEqual(['Each output of K1, K2 and K3 is isolated from earth.']);
   });
 
   it('says what flows into a short circuit and how warm the module gets', () => {
@@ -91,12 +95,12 @@ describe('the answer', () => {
         inWords('limit-style', 'foldback', { step: 3 }),
         measured('temperature-rise', 'temperature-difference', 35, [promised('the thermometer', 0.5)], {
           step: 2,
-          note: 'at 4.00 A: settles at 58 °C in air of 23 °C',
+          note: 'it settles at 58 °C in air of 23 °C, at 4.00 A',
         }),
       ),
     ).toEqual([
       'Into a short circuit it gives 1.200 ± 0.020 A (foldback).',
-      'It warms by 35.00 ± 0.98 K: at 4.00 A: settles at 58 °C in air of 23 °C.',
+      'It warms by 35.00 ± 0.98 K: it settles at 58 °C in air of 23 °C, at 4.00 A.',
     ]);
   });
 

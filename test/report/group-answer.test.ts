@@ -24,17 +24,21 @@ function circuitOf(circuit: 'parallel' | 'series', ...findings: readonly Finding
 
 describe('the answer about a group', () => {
   it('leads with what it holds and how it fails, then who hogs and why, then the ballast', () => {
-    const current = found('group-current', 'current', 4.2, 'fails at about what one of them holds');
+    const current = found('group-current', 'current', 4.2, 'it fails at about what one of them holds');
     const result = circuitOf(
       'parallel',
       current,
-      said('hogging-module', 'K1', 'it carries 78 % of 4.00 A: its open-circuit voltage is 9 mV above K2’s'),
+      said(
+        'hogging-module',
+        'K1',
+        'it carries 78 % of 4.00 A because its open-circuit voltage is 9 mV above K2’s',
+      ),
       { ...found('recommended-ballast', 'resistance', 0.047, '47 mΩ ± 1 % in each'), interval: null },
     );
     expect(groupAnswer(result)).toEqual([
-      'The group holds 4.200 ± 0.041 A: fails at about what one of them holds.',
-      'K1 hogs: it carries 78 % of 4.00 A: its open-circuit voltage is 9 mV above K2’s.',
-      'Ballast: 47 mΩ ± 1 % in each.',
+      'The group holds 4.200 ± 0.041 A; it fails at about what one of them holds.',
+      'K1 hogs: it carries 78 % of 4.00 A because its open-circuit voltage is 9 mV above K2’s.',
+      'As ballast take 47 mΩ ± 1 % in each.',
     ]);
   });
 
@@ -45,7 +49,7 @@ describe('the answer about a group', () => {
       said('hogging-module', 'undetermined', 'the currents add up to 8 A where the load takes 7 A'),
     );
     expect(groupAnswer(result)).toEqual([
-      'The ballast of K2 is 50.00 ± 0.49 mΩ: the bench file says 40 mΩ: measure it again.',
+      'The ballast of K2 is 50.00 ± 0.49 mΩ; the bench file says 40 mΩ: measure it again.',
       'Whether one of them hogs could not be told: the currents add up to 8 A where the load takes 7 A.',
     ]);
   });
@@ -81,13 +85,13 @@ describe('the answer about a stack', () => {
       found('stack-voltage', 'voltage', 36.8),
       found('float-voltage-of-K2', 'voltage', 12.3),
       found('float-voltage-of-K3', 'voltage', 24.5, 'its output then stands at 36.8 V'),
-      said('weakest-module', 'K2', 'K2 collapses at 3.60 A'),
+      said('weakest-module', 'K2', 'it collapses at 3.60 A'),
     );
     expect(groupAnswer(result)).toEqual([
       'The string holds 3.500 ± 0.034 A.',
       'It gives 36.80 ± 0.36 V with no load.',
-      'The 0 V of K3 floats 24.50 ± 0.24 V above that of the string: its output then stands at 36.8 V.',
-      'The weakest is K2: K2 collapses at 3.60 A.',
+      'The 0 V of K3 floats 24.50 ± 0.24 V above that of the string; its output then stands at 36.8 V.',
+      'The weakest is K2: it collapses at 3.60 A.',
     ]);
   });
 
