@@ -47,7 +47,11 @@ export function* groupProblems(bench: {
   const { group, instruments } = bench;
   const { scanner, meter } = instruments;
   if (scanner !== undefined && group?.measuredBy !== 'scanner') {
-    yield { path: ['instruments', 'scanner'], message: "no 'group' section says what its channels are" };
+    const message =
+      group === undefined
+        ? "no 'group' section says what its channels are"
+        : `the group is measured by ${group.measuredBy}; with a scanner it is 'measured-by: scanner'`;
+    yield { path: ['instruments', 'scanner'], message };
   }
   if (group === undefined) return;
   const by = ['group', 'measured-by'];
@@ -64,6 +68,10 @@ export function* groupProblems(bench: {
     if (group.measuredBy === 'meters' && place.meter === undefined)
       yield { path, message: "missing 'meter': each place needs one of its own" };
     if (place.channel === undefined) continue;
+    if (group.measuredBy !== 'scanner') {
+      const message = `only a scanner has channels, and the group is measured by ${group.measuredBy}`;
+      yield { path: [...path, 'channel'], message };
+    }
     const other = used.get(place.channel);
     if (other !== undefined) {
       yield { path: [...path, 'channel'], message: `channel ${place.channel} is that of ${other} already` };

@@ -41,11 +41,17 @@ export class TerminalOperator implements Operator {
   }
 
   async ask({ text, answer }: OperatorRequest, signal: AbortSignal): Promise<string> {
-    if (answer === 'done') {
-      await this.#question(`\n${text}\nPress Enter when it is done. `, signal);
-      return 'done';
-    }
+    if (answer === 'done') return this.#untilDone(text, signal);
     return (await this.#question(`\n${text}\n> `, signal)).trim();
+  }
+
+  /** Only Enter, or a word that says so, means done: whoever types "wait" must not be taken at another word. */
+  async #untilDone(text: string, signal: AbortSignal): Promise<'done'> {
+    let question = `\n${text}\nPress Enter when it is done. `;
+    while (!/^\s*(done|y|yes)?\s*$/i.test(await this.#question(question, signal))) {
+      question = 'Not done, then. Press Enter when it is; Ctrl-C stops and leaves the load off. ';
+    }
+    return 'done';
   }
 
   #say(text: string): void {

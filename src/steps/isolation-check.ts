@@ -7,7 +7,7 @@ import { camelKeys } from '../files/camel-keys.js';
 import type { Module } from '../files/module.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Dimension, Seconds, Volts } from '../quantity/quantity.js';
-import { askToDo } from './ask-to-do.js';
+import { askToDo, handTime } from './ask-to-do.js';
 import { defineStep } from './define-step.js';
 import { longestDwell } from './dwell.js';
 import { requireIsolation } from './isolation-proved.js';
@@ -18,9 +18,6 @@ import { proveLeads } from './prove-leads.js';
 import type { StepContext } from './step-kind.js';
 
 const longestWait: Seconds = 3600;
-/** A person at a question. */
-const handTime: Seconds = 15;
-const questions = 9;
 /** What a supply takes to start. */
 const startUp: Seconds = 2;
 
@@ -92,7 +89,9 @@ export const isolationCheck = defineStep({
   currents: [],
   describe: ({ plugIn }) =>
     `unplugged and discharged, leads proved before and after: output to earth${plugIn ? '' : '; it stays unplugged'}`,
-  duration: ({ dwell, readings }) => questions * handTime + 7 * dwell + readings,
+  // What is asked for once, and for each module; and likewise the points.
+  duration: ({ dwell, readings }, { modules }) =>
+    (5 + 4 * modules) * handTime + (2 + 5 * modules) * dwell + modules * readings,
   perform: checkIsolation,
 });
 

@@ -7,14 +7,14 @@ export type Handwork = Required<Pick<OperatorRequest, 'name' | 'text' | 'act'>>;
 
 type Modules = readonly [Module, ...Module[]];
 
+/** The outputs stay as they are until the meter has shown that they are discharged. */
 export function unplug(modules: Modules): Handwork {
-  const outputs =
-    modules.length === 1
-      ? `take its output leads off the load and off anything else; only the meter's probes stay on its output`
-      : 'take the output of each off the load, off its ballast and off the others, so that none touches another';
+  const it = modules.length === 1 ? 'it' : 'them';
   return {
     name: 'unplug',
-    text: `${inputsOut(modules)} and leave ${modules.length === 1 ? 'it' : 'them'} out. Then ${outputs}.`,
+    text:
+      `${inputsOut(modules)} and leave ${it} out. The pins may hold a charge for some seconds: do not touch ` +
+      'them. Touch nothing at the output either, until the meter has shown that it is discharged.',
     act: 'unplug',
   };
 }
@@ -27,15 +27,24 @@ export function probeOutput({ name }: Module): Handwork {
   };
 }
 
-export const leadsTogether: Handwork = {
-  name: 'leads-together',
-  text: "Take the meter's leads off and hold their two tips together, firmly, until the next question.",
-  act: 'leads together',
-};
+/** Before the first measurement the output is freed as well: by now it has been shown to be discharged. */
+export function leadsTogether(when: 'before' | 'after', modules: Modules): Handwork {
+  const freed =
+    modules.length === 1
+      ? 'The output is discharged: take its leads off the load and off anything else. '
+      : 'The outputs are discharged: take each off the load, off its ballast and off the others, so that none touches another. ';
+  return {
+    name: 'leads-together',
+    text:
+      (when === 'before' ? freed : '') +
+      "Take the meter's leads off and join their two tips, clipped or held together firmly, until the next question.",
+    act: 'leads together',
+  };
+}
 
 export const leadsApart: Handwork = {
   name: 'leads-apart',
-  text: "Hold the tips of the meter's leads apart, touching nothing and not your fingers, until the next question.",
+  text: "Lay the tips of the meter's leads apart on something that does not conduct, touching nothing, until the next question.",
   act: 'leads apart',
 };
 
@@ -44,19 +53,22 @@ export function probeEarth(module: Module, alone: boolean): Handwork {
   const { name, protectionClass, input } = module;
   const out =
     input === 'mains' ? `The plug of ${name} is out of the socket` : `The input of ${name} is off its source`;
-  const joined = protectionClass === 'I' ? '' : ' Join them with clip leads, as it has no earth of its own.';
+  const joined =
+    protectionClass === 'I'
+      ? ''
+      : ' It has no earth of its own: first join what is named next with clip leads.';
   return {
     name: `probe-earth-${name}`,
     text:
-      `${out} and stays out. Hold one of the meter's tips on ${earthPoint(module)}, ` +
-      `and the other on the 0 V of its output, until the next question.${joined}`,
+      `${out} and stays out.${joined} Clip or hold one of the meter's tips on ${earthPoint(module)}, ` +
+      'and the other on the 0 V of its output, until the next question.',
     act: alone ? 'probe earth and 0 V' : `probe earth and 0 V of ${name}`,
   };
 }
 
 export const probesBack: Handwork = {
   name: 'probe-output',
-  text: "Everything still unplugged: take off any clip leads, wire the outputs as the procedure's wiring says, and put the meter's probes back where the bench file has them.",
+  text: "Everything still unplugged: take off any clip leads, put the output's leads back where they were, and the meter's probes where the bench file has them.",
   act: 'probe the output',
 };
 

@@ -21,7 +21,7 @@ export async function proveLeads(
 ): Promise<LeadsProof> {
   await points.measure('resistance');
   const plan = { dwell: given.dwell, readings: given.readings };
-  await askToDo(context, ask.leadsTogether);
+  await askToDo(context, ask.leadsTogether(when, context.underTest.modules));
   context.bench.places.movedTo('leads');
   const together = await points.resistance({ phase: 'leads-together', ...plan });
   if (leadsTogether(together, given) !== 'sound') throw leadOpen(together, when, given);

@@ -76,7 +76,7 @@ describe('one mistake is one line, at its place', () => {
       own,
       '  thermometer:',
       '  scanner: { driver: scanner-route-scpi, connection: "tcp://127.0.0.1:5027" }\n  thermometer:',
-      "6:12: instruments.scanner: no 'group' section says what its channels are",
+      "6:12: instruments.scanner: the group is measured by meters; with a scanner it is 'measured-by: scanner'",
     ],
     [
       'a place without a channel',

@@ -53,6 +53,15 @@ describe('an act on a terminal', () => {
     expect(shown()).toBe('\nPlug K1 in.\nPress Enter when it is done. ');
   });
 
+  it('is not done when something else is typed, and is asked for again', async () => {
+    const { input, operator, shown } = terminal();
+    const asked = operator.ask({ name: 'plug', text: 'Plug K1 in.', answer: 'done' }, never);
+    input.write('wait\n');
+    await expect.poll(shown).toContain('Not done, then.');
+    input.write('done\n');
+    expect(await asked).toBe('done');
+  });
+
   it('that asks for an answer gets it without the spaces around it', async () => {
     const { input, operator, shown } = terminal();
     const asked = operator.ask({ name: 'air', text: 'How warm is it?', answer: 'temperature' }, never);

@@ -6,13 +6,19 @@ const classTwo = { ...k1, name: 'W1', protectionClass: 'II' } as const;
 const dc = { ...k1, name: 'D1', input: 'dc' } as const;
 
 describe('what is asked of the person who checks the isolation', () => {
-  it('begins with the plug, and frees the output from all that would be measured with it', () => {
+  it('begins with the plug, and frees the output only when it has been shown to be discharged', () => {
     expect(ask.unplug([k1]).text).toBe(
-      "Pull the plug of K1 out of its socket and leave it out. Then take its output leads off the load and off anything else; only the meter's probes stay on its output.",
+      'Pull the plug of K1 out of its socket and leave it out. The pins may hold a charge for some seconds: do not touch them. Touch nothing at the output either, until the meter has shown that it is discharged.',
     );
-    expect(ask.unplug([k1, { ...k1, name: 'K2' }, { ...k1, name: 'K3' }]).text).toMatch(
-      /^Pull the plugs of K1, K2 and K3 out of their sockets and leave them out\. .* none touches another\.$/,
+    const three = [k1, { ...k1, name: 'K2' }, { ...k1, name: 'K3' }] as const;
+    expect(ask.unplug(three).text).toMatch(
+      /^Pull the plugs of K1, K2 and K3 out of their sockets and leave them out\. /,
     );
+    expect(ask.leadsTogether('before', [k1]).text).toMatch(
+      /^The output is discharged: take its leads off the load /,
+    );
+    expect(ask.leadsTogether('before', three).text).toContain('so that none touches another');
+    expect(ask.leadsTogether('after', three).text).toMatch(/^Take the meter's leads off /);
     expect(ask.unplug([dc]).text).toMatch(/^Take the input leads of D1 off their source /);
     expect(ask.unplug([k1, dc]).text).toMatch(/^Pull the plugs, or take off the input leads, of K1 and D1 /);
   });
