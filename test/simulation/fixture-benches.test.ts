@@ -6,7 +6,7 @@ import { readBench } from '../../src/files/read-bench.js';
 import { readDriver } from '../../src/files/read-driver.js';
 import { dialectFor } from '../../src/simulation/dialects/choose-dialect.js';
 import { openSimulation } from '../../src/simulation/open-simulation.js';
-import { trueCircuit } from '../../src/simulation/true-circuit.js';
+import { type TrueCircuit, trueCircuit } from '../../src/simulation/true-circuit.js';
 import { Instrument } from '../../src/instrument/instrument.js';
 
 const root = join(import.meta.dirname, '../..');
@@ -52,6 +52,34 @@ describe('the benches that come with the project', () => {
       expect(await load.flag('input-state')).toBe(false);
     },
   );
+
+  async function truthOf(file: string): Promise<TrueCircuit> {
+    const { value: bench } = await readBench(join(root, 'fixtures/benches', file));
+    if (bench.simulation === undefined) throw new Error('no simulation');
+    return trueCircuit(bench.simulation);
+  }
+
+  it('show the same two bricks fail together at one brick’s limit, and hold both labels through ballasts', async () => {
+    const joined = await truthOf('group-hiccup.yaml');
+    expect(joined.currentsAt(4)).toEqual([4, 0]);
+    // K1 meets its 5.3 A, and the group is gone.
+    expect(joined.dropoutCurrent(0.1)).toBeCloseTo(5.38, 2);
+    const held = await truthOf('group-constant-current.yaml');
+    expect(held.firstAtItsLimit?.module).toBe('K1');
+    expect(held.dropoutCurrent(0.1)).toBeCloseTo(5.3 + 5.2, 6);
+    const through = await truthOf('group-ballast.yaml');
+    expect(through.imbalanceAt(8)).toBeLessThan(0.075);
+    expect(through.dropoutCurrent(0.1)).toBeGreaterThan(10);
+  });
+
+  it('tell of each ballast what is there', async () => {
+    for (const file of benches) {
+      const { value: bench } = await readBench(join(root, 'fixtures/benches', file));
+      for (const [place, { ballast }] of bench.group?.places.entries() ?? []) {
+        expect(ballast?.resistance ?? 0).toBe(bench.simulation?.modules[place]?.ballast);
+      }
+    }
+  });
 
   it.each([
     ['load-input-scpi', 'standard-load'],
