@@ -129,7 +129,11 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     'railproof simulate fixtures/benches/nursery.yaml > live.yaml',
   )
     .option('--pty', 'on pseudo-terminals, as serial instruments (needs socat)')
-    .action(async (bench: string, options: { pty?: boolean }) => {
+    .option(
+      '--acts',
+      'do what is typed here, a line each, as hands at the bench would: unplug K1, plug in K1',
+    )
+    .action(async (bench: string, options: { pty?: boolean; acts?: boolean }) => {
       const { simulate } = await import('./simulate.js');
       done(await simulate({ bench, ...options }, streams));
     });

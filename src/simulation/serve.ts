@@ -13,6 +13,7 @@ import {
 import { openSimulation } from './open-simulation.js';
 import { serveOnPty } from './serve-pty.js';
 import { LOOPBACK, serveOnTcp } from './serve-tcp.js';
+import type { SimulatedOperator } from './simulated-operator.js';
 import { CannotSimulateError } from './simulation-errors.js';
 import type { VirtualBench } from './virtual-bench.js';
 
@@ -20,6 +21,8 @@ export interface ServedBench {
   /** By post, as a bench file writes them: `tcp://127.0.0.1:5025`, `serial:<link>?baud=115200`. */
   readonly addresses: Readonly<Partial<Record<Post, string>>>;
   readonly world: VirtualBench;
+  /** Whoever has hands at it: the plugs and the meter's probes. */
+  readonly operator: SimulatedOperator;
   close(): Promise<void>;
 }
 
@@ -76,7 +79,7 @@ export async function serveBench(options: ServeOptions): Promise<ServedBench> {
     await close();
     throw error;
   }
-  return { addresses, world: opened.world, close };
+  return { addresses, world: opened.world, operator: opened.operator, close };
 }
 
 async function temporaryFolder(closings: (() => Promise<void>)[]): Promise<string> {
