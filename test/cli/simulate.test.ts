@@ -22,7 +22,7 @@ describe('a bench that is served with hands at it', () => {
       said += chunk.toString();
     });
     child.stdout.resume();
-    await expect.poll(() => said).toContain('by hand');
+    await expect.poll(() => said, { timeout: 10_000 }).toContain('by hand');
     const port = Number(/meter: tcp:\/\/127\.0\.0\.1:(\d+)/.exec(said)?.[1]);
     expect(await voltageAt(port)).toBeGreaterThan(15);
 
