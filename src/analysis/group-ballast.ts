@@ -31,7 +31,7 @@ export function recommendedBallast(
   const imbalance = Math.min(wanted.imbalance, 0.99);
   const missing = header.modules.filter(({ name }) => !lines.has(name)).map(({ name }) => name);
   if (missing.length > 0) {
-    const note = `${missing.join(', ')} carried too little in the group to know ${missing.length === 1 ? 'its' : 'their'} own voltage and droop: run real-limit on ${missing.length === 1 ? 'it' : 'each'} alone`;
+    const note = `${missing.join(', ')} carried too little in the group to know ${missing.length === 1 ? 'its' : 'their'} own voltage and droop; run real-limit on ${missing.length === 1 ? 'it' : 'each'} alone`;
     return inWords('recommended-ballast', 'undetermined', { step, note });
   }
   const outcome = smallestBallast({

@@ -6,7 +6,7 @@ import { amps, percent } from './in-words.js';
 import type { GroupLook } from './module-currents.js';
 import type { ModuleLine } from './module-lines.js';
 import type { Saturated } from './saturation.js';
-import { extremesOf, imbalanceFinding, sumOf } from './shares.js';
+import { carriedAt, extremesOf, imbalanceFinding, sumOf } from './shares.js';
 
 /** What is known of a group when it comes to who hogs the load, and why. */
 export interface Sharing {
@@ -32,8 +32,8 @@ export function hoggingFinding(header: RunHeader, sharing: Sharing): Finding | u
   const { value, interval, step } = imbalanceFinding(header, look, { setting, curve: held });
   const [low, high] = interval ?? [Number(value), Number(value)];
   const { most, least } = extremesOf(look);
-  const current = look.currents.find(({ module }) => module === most)?.current ?? 0;
-  const carries = `it carries ${percent(current / sumOf(look))} of ${amps(look.total)}`;
+  const share = carriedAt(look).find(({ module }) => module === most)?.share ?? 0;
+  const carries = `it carries ${percent(share)} of ${amps(look.total)}`;
   const then =
     saturated === undefined
       ? ''

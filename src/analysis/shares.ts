@@ -18,18 +18,18 @@ export function shareFindings(
   curve: readonly GroupLook[],
 ): readonly Finding[] {
   const sum = sumOf(look);
-  return look.currents.map(({ module, current, place }, index) => {
+  const lowest = lowestTold(header, curve);
+  const below = lowest === undefined || lowest.total >= look.total ? undefined : lowest;
+  const here = carriedAt(look);
+  const there = below === undefined ? [] : carriedAt(below);
+  return look.currents.map(({ module, current }, index) => {
     const share = current / sum;
     const weights = look.currents.map((_, other) => ((other === index ? 1 : 0) - share) / sum);
-    const lowest = lowestTold(header, curve);
-    const there = lowest?.currents.find((each) => each.place === place)?.current ?? 0;
     const elsewhere =
-      lowest === undefined || lowest.total >= look.total
-        ? ''
-        : `; ${percent(within(0, there / sumOf(lowest), 1))} of ${amps(lowest.total)}`;
+      below === undefined ? '' : `; ${percent(there[index]?.share ?? 0)} of ${amps(below.total)}`;
     return measured(`share-of-${module}`, 'ratio', share, budgetOf(header, look, { modules: weights }), {
       step: look.step,
-      note: `${amps(share * look.total)} of ${amps(look.total)}${elsewhere}`,
+      note: `${amps(here[index]?.current ?? 0)} of ${amps(look.total)}${elsewhere}`,
     });
   });
 }
@@ -96,13 +96,20 @@ function lastTime({ points }: GroupLook): number {
 /** What a module carried. */
 export interface Carried {
   readonly module: string;
+  readonly share: Ratio;
   readonly current: Amperes;
 }
 
-/** Each module's share of the load's current: so that what a reader adds up is what the load takes. */
+/**
+ * What each module carried, in words: its share of the load's current, so that what a reader adds up is what
+ * the load takes, and nobody is said to carry less than nothing.
+ */
 export function carriedAt(look: GroupLook): readonly Carried[] {
   const sum = sumOf(look);
-  return look.currents.map(({ module, current }) => ({ module, current: (current / sum) * look.total }));
+  return look.currents.map(({ module, current }) => {
+    const share = within(0, current / sum, 1);
+    return { module, share, current: share * look.total };
+  });
 }
 
 export function sumOf({ currents }: GroupLook): Amperes {

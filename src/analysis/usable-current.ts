@@ -68,7 +68,7 @@ function highestHeld(evidence: Evidence, held: readonly CurvePoint[], latch: str
       promised(`${current.of}, offset`, current.offset),
       promised(`${current.of}, resolution`, current.resolution),
     ],
-    { step: highest.step, note: `at least this much: no limit was met up to ${amps(highest.set)}${latch}` },
+    { step: highest.step, note: `no limit was met up to ${amps(highest.set)}${latch}` },
   );
   return { finding: { ...finding, bound: 'least' }, setBy: 'highest-tried' };
 }

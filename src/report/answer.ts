@@ -38,7 +38,7 @@ function advice(result: Result): readonly string[] {
 /** What may be nothing is no delivery: then only the reason is told. */
 function why(usable: Finding): string {
   return (usable.interval?.[0] ?? 0) > 0
-    ? `It delivers ${inOneLine(usable)}; ${usable.note}.`
+    ? `It delivers ${usable.bound === 'least' ? 'at least ' : ''}${inOneLine(usable)}; ${usable.note}.`
     : `${capitalised(usable.note)}.`;
 }
 

@@ -111,6 +111,25 @@ describe('a group in which one hogs', () => {
     });
   });
 
+  it('carries no more than all in words, whatever an offset of the meter makes of it', () => {
+    const bricks = {
+      K1: { voltage: 15.3, droop: 0.001, ballast: 0.003 },
+      K2: { voltage: 15.21, droop: 0.001, ballast: 0.003 },
+    };
+    const meter = { voltage: { ofReading: 5e-4, fixed: 1e-3, resolution: 1e-5 } };
+    const points = sharingPoints(bricks, loads).map((point) => ({
+      ...point,
+      places: Object.fromEntries(
+        Object.entries(point.places).map(([name, volts]) => [name, Number(volts) - 3e-4]),
+      ),
+    }));
+    const found = findingsOf(headerOf(bricks, { meter }), points);
+    expect(found.get('share-of-K1')?.value).toBeGreaterThan(1);
+    expect(found.get('share-of-K1')?.note).toMatch(/^8\.00 A of 8\.00 A/);
+    expect(found.get('share-of-K2')?.note).toMatch(/^0 A of 8\.00 A/);
+    expect(found.get('hogging-module')?.note).toMatch(/^it carries 100 % of 8\.00 A/);
+  });
+
   it('does not carry more than its own label by our advice', () => {
     const found = shared({ K1: { ...alike, voltage: 15.4 }, K2: alike });
     const recommended = found.get('recommended-current');

@@ -57,7 +57,7 @@ describe('the usable current', () => {
       ({ name }) => name === 'usable-current',
     );
     expect(found?.value).toBe(4);
-    expect(found?.note).toBe('at least this much: no limit was met up to 4.00 A');
+    expect(found?.note).toBe('no limit was met up to 4.00 A');
     expect(found?.bound).toBe('least');
     expect(found?.standardUncertainty).toBeCloseTo(Math.hypot(0.008, 0.01), 12);
   });
