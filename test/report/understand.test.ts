@@ -75,7 +75,10 @@ describe('a record made on the simulated bench', () => {
       const collector = new EvidenceCollector(result.header);
       const seen: string[] = [];
       for (const [index, line] of lines.entries()) {
-        collector.add(JSON.parse(line) as TimedEvent);
+        const event = JSON.parse(line) as TimedEvent;
+        collector.add(event);
+        // A reading of a point that is not finished moves little; a few of them speak for the rest.
+        if (event.event === 'reading' && index % 7 !== 0) continue;
         const evidence = collector.result();
         const findings = analyse(evidence);
         const decisions = judge(result.header, findings);
@@ -91,7 +94,7 @@ describe('a record made on the simulated bench', () => {
         // Nobody knows of a record that is not finished that the module fails.
         if (index < lines.length - 1) expect(cut.outcome, `line ${index + 1}`).not.toBe('does-not-conform');
         seen.push(...findings.map(({ name }) => name));
-        if (index % 10 !== 0) continue;
+        if (index % 4 !== 0) continue;
         expect(resultAsText(cut, plainStyle)).not.toMatch(/NaN|undefined|not a number|Infinity|∞/);
         expect(JSON.stringify(resultAsJson(cut))).not.toContain('"value":null');
       }
