@@ -5,7 +5,7 @@
  * const loaded = await loadPlan({ procedure: 'real-limit', bench: 'bench.yaml', modules: ['K1.yaml'] });
  * const world = await worldOf(loaded.plan.bench, loaded.plan.drivers);
  * const operator = new TerminalOperator({ input: process.stdin, output: process.stderr, yes: false });
- * const watch = { stepBegan() {}, progress() {} };
+ * const watch = { stepBegan() {}, progress() {}, noticed() {} };
  * const signal = new AbortController().signal;
  * const { folder, safety } = await performPlan(loaded, world, { runs: 'runs', operator, signal, watch });
  * const { findings, outcome } = understand(folder.path);

@@ -45,6 +45,11 @@ export class ProgressLine implements RunWatcher {
     this.#stream.write(this.#text(step, progress).slice(0, width - 1));
   }
 
+  noticed(text: string): void {
+    this.clear();
+    this.#stream.write(`  ${text}\n`);
+  }
+
   /** Leaves an empty line for whoever writes next. */
   clear(): void {
     if (!this.#stream.isTTY) return;

@@ -27,6 +27,8 @@ export interface Performance {
 export interface RunWatcher {
   stepBegan(step: number, kind: string, summary: string): void;
   progress(step: number, progress: Progress): void;
+  /** Something that whoever stands at the bench should know, and not only for the moment. */
+  noticed(text: string): void;
 }
 
 /** Why it ended; the first reason wins, and making safe comes after it and can't change it. */
@@ -47,7 +49,7 @@ export interface Performed {
  * is made safe before this returns, and the journal says how it ended.
  */
 export async function perform(performance: Performance): Promise<Performed> {
-  const ending = await attempt(performance);
+  const ending = await attempt({ ...performance, journal: watched(performance) });
   const safety = await makeSafe(performance.bench);
   const { journal } = performance;
   try {
@@ -68,6 +70,16 @@ export async function perform(performance: Performance): Promise<Performed> {
     if (ending.how === 'completed') return performed(endingOf(error), safety);
   }
   return performed(ending, safety);
+}
+
+/** Notices are for the journal and for whoever is there. */
+function watched({ journal, watch }: Performance): Performance['journal'] {
+  return {
+    append(event) {
+      if (event.event === 'notice') watch.noticed(event.text);
+      journal.append(event);
+    },
+  };
 }
 
 function performed(ending: Ending, safety: Safety): Performed {

@@ -32,6 +32,13 @@ describe('the progress of a run', () => {
     expect(shown.split('\n')).toHaveLength(2);
   });
 
+  it('leaves on the screen what whoever stands there should know', () => {
+    const { progress, text } = lineOn(true);
+    progress.stepBegan(2, 'load-ramp', '21 points from 0 A to 4 A');
+    progress.noticed('K1 may still be unplugged');
+    expect(text()).toMatch(/\n[^\n]* {2}K1 may still be unplugged\n$/);
+  });
+
   it('shows how warm the module is, where that is measured', () => {
     const { progress, text } = lineOn(true);
     progress.progress(2, { voltage: 15, current: 4, temperature: 41.23 });

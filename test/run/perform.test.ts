@@ -50,6 +50,9 @@ describe('a run that is completed', () => {
       { name: 'hot-surfaces', by: 'simulated-operator' },
     ]);
     expect(run.inputs).toEqual(['on', 'off']);
+    expect(run.noticed).toEqual([
+      expect.stringMatching(/^before anything was switched on the module read 15\.\d+ V$/),
+    ]);
   });
 
   it('hands what one step measured to the steps after it', async () => {

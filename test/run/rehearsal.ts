@@ -51,6 +51,8 @@ export interface Rehearsal extends Performed {
   readonly bench: Nursery;
   /** What was told to whoever watches: the steps that began. */
   readonly watched: readonly string[];
+  /** What the person at the bench was told to stay. */
+  readonly noticed: readonly string[];
   /** Each change of the input at the load itself, as it really was. */
   readonly inputs: readonly InputState[];
 }
@@ -97,6 +99,7 @@ export async function rehearse(change: RehearsalChange): Promise<Rehearsal> {
   append({ event: 'opened', format: journalFormat, wallClock: place.clock.wall().toISOString(), header: '' });
   const bench = await place.open();
   const watched: string[] = [];
+  const noticed: string[] = [];
   const performed = await perform({
     plan,
     bench,
@@ -107,11 +110,12 @@ export async function rehearse(change: RehearsalChange): Promise<Rehearsal> {
     watch: {
       stepBegan: (step, kind, summary) => watched.push(`${step} ${kind}: ${summary}`),
       progress: () => undefined,
+      noticed: (text) => noticed.push(text),
     },
   });
   journal.close();
   await bench.close();
   const events: TimedEvent[] = [];
   const integrity = readJournal(path, checkJournal(path), (event) => events.push(event));
-  return { ...performed, plan, events, integrity, bench: place, watched, inputs };
+  return { ...performed, plan, noticed, events, integrity, bench: place, watched, inputs };
 }

@@ -11,7 +11,11 @@ import { makePlan } from '../../src/run/plan.js';
 import type { RunWatcher } from '../../src/run/perform.js';
 import { stepKinds } from '../../src/steps/index.js';
 
-export const nobodyWatches: RunWatcher = { stepBegan: () => undefined, progress: () => undefined };
+export const nobodyWatches: RunWatcher = {
+  stepBegan: () => undefined,
+  progress: () => undefined,
+  noticed: () => undefined,
+};
 
 /** Performs a shipped procedure on a simulated bench that was made in memory. */
 export async function runQuietly(
