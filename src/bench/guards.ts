@@ -92,7 +92,7 @@ export class BlindSamples {
   #inARow = 0;
 
   /** @throws GuardTrippedError `no-reading` at the third blind sample in a row. */
-  count(unread: 'voltage' | 'current' | 'resistance' | undefined): void {
+  count(unread: 'voltage' | 'current' | 'temperature' | 'resistance' | undefined): void {
     this.#inARow = unread === undefined ? 0 : this.#inARow + 1;
     if (unread === undefined || this.#inARow < mostBlind) return;
     throw new GuardTrippedError(

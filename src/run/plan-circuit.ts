@@ -2,9 +2,14 @@ import { nameplateOf } from '../circuit/nameplate.js';
 import { type Bench, type BenchDrivers } from '../files/bench.js';
 import type { Module } from '../files/module.js';
 import type { Circuit, ProcedureStep } from '../files/procedure.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Volts } from '../quantity/quantity.js';
 import type { StepKind } from '../steps/step-kind.js';
 import type { UnderTest } from '../steps/under-test.js';
 import type { PlanStep } from './plan.js';
+
+/** The limit of class ES1 for direct voltage, IEC 62368-1, table 4; from memory. */
+const touchSafe: Volts = 60;
 
 export function underTestOf(circuit: Circuit, modules: readonly [Module, ...Module[]]): UnderTest {
   const [first, ...others] = modules;
@@ -40,17 +45,21 @@ export function* circuitProblems({ circuit, modules }: UnderTest, bench: Bench):
 
 /** What a step needs of the circuit and of the bench, and does not find there. */
 export function* needProblems(
-  { place, kind: word }: ProcedureStep,
-  { needs }: StepKind,
-  { circuit }: UnderTest,
+  { place, kind: word, parameters }: ProcedureStep,
+  kind: StepKind,
+  underTest: UnderTest,
   bench: Bench,
   drivers: BenchDrivers,
 ): Generator<string> {
   const where = `${place}: ${word}`;
+  const { needs } = kind;
+  const { circuit } = underTest;
   if (needs.circuits !== undefined && !needs.circuits.includes(circuit)) {
     yield `${where}: is for ${needs.circuits.join(' and ')} circuits, and the procedure's is ${circuit}`;
   }
-  if (needs.taps === true) yield* tapProblems(where, circuit, bench);
+  if (needs.taps === true) yield* tapProblems(where, underTest, bench);
+  if (kind.needsThermometer?.(parameters) === true && drivers.thermometer === undefined)
+    yield `${where}: needs a thermometer, and the bench has none`;
   for (const role of ['load', 'meter'] as const) {
     const operations = needs.operations?.[role] ?? [];
     const readings = needs.readings?.[role] ?? [];
@@ -72,7 +81,11 @@ export function* needProblems(
 }
 
 /** How the places of the circuit are told apart, and what their resistors are, must be known. */
-function* tapProblems(where: string, circuit: Circuit, { group, instruments }: Bench): Generator<string> {
+function* tapProblems(
+  where: string,
+  { circuit, rated }: UnderTest,
+  { group, instruments }: Bench,
+): Generator<string> {
   if (group === undefined) {
     yield `${where}: the bench file has no 'group' section, which says how the modules are told apart`;
     return;
@@ -83,6 +96,9 @@ function* tapProblems(where: string, circuit: Circuit, { group, instruments }: B
         yield `${where}: place ${index + 1} of the bench's group has no ballast, from whose voltage its current is known`;
       }
     }
+  }
+  if (circuit === 'series' && group.measuredBy === 'operator' && rated.voltage > touchSafe) {
+    yield `${where}: a stack of ${formatQuantity(rated.voltage, 'voltage')} is above the ${formatQuantity(touchSafe, 'voltage')} DC that are touch-safe, so nobody may move probes in it: use a scanner or a meter at each place`;
   }
   if (group.measuredBy === 'operator' && instruments.meter === undefined)
     yield `${where}: needs a meter, and the bench has none`;

@@ -76,22 +76,42 @@ export function makePlan(
     );
   }
   const measured = new Set<string>(Object.keys(known));
-  const steps = procedure.steps.map((step) => {
+  const passes = bench.group?.measuredBy === 'operator' ? modules.length : 1;
+  const reach = { modules: modules.length, passes };
+  const steps = procedure.steps.map((step, index) => {
     const kind = stepKinds.find((one) => one.kind === step.kind);
     if (kind === undefined)
       throw new Error(`step kind ${step.kind} passed the procedure's schema and is not known`);
+    const before = procedure.steps.slice(0, index).map((earlier) => earlier.kind);
     problems.push(
+      ...orderProblems(step, kind, before),
       ...problemsOf(step, kind, measured, known, ceilings),
       ...needProblems(step, kind, underTest, bench, drivers),
     );
     for (const name of kind.measures) measured.add(name);
     const { parameters } = step;
-    return { kind, parameters, summary: kind.describe(parameters), duration: kind.duration(parameters) };
+    return {
+      kind,
+      parameters,
+      summary: kind.describe(parameters),
+      duration: kind.duration(parameters, reach),
+    };
   });
   if (problems.length > 0) throw new PlanError(problems);
   const duration = steps.reduce((sum, step) => sum + step.duration, 0);
   const cautions = cautionsFor(procedure, underTest);
   return { procedure, bench, underTest, drivers, ceilings, steps, cautions, duration, known };
+}
+
+/** What a step rests on is done before it. */
+function orderProblems(
+  { place, kind: word }: ProcedureStep,
+  { needs }: StepKind,
+  before: readonly string[],
+): string[] {
+  return (needs.after ?? [])
+    .filter((kind) => !before.includes(kind))
+    .map((kind) => `${place}: ${word}: there is no ${kind} before it, and it needs one`);
 }
 
 function problemsOf(

@@ -1,5 +1,9 @@
+import type { Seconds } from '../quantity/quantity.js';
 import type { OperatorRequest } from './operator.js';
 import type { StepContext } from './step-kind.js';
+
+/** A person at a question, with something to do. */
+export const handTime: Seconds = 15;
 
 /**
  * Asks the person at the bench to do something and waits until it is done; the question and the answer are

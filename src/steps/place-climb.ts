@@ -1,6 +1,8 @@
+import { z } from 'zod';
 import type { Clock } from '../clock/clock.js';
 import { count, quantity } from '../files/building-blocks.js';
 import type { Amperes, Ratio, Seconds } from '../quantity/quantity.js';
+import { handTime } from './ask-to-do.js';
 import { longestDwell } from './dwell.js';
 import { holds } from './holding.js';
 import { openCircuitVoltage } from './known-voltage.js';
@@ -8,8 +10,12 @@ import type { Pass } from './place-passes.js';
 import type { Points } from './point.js';
 import { comeBack } from './recover.js';
 import { ModuleStaysOffError } from './step-error.js';
-import type { StepContext } from './step-kind.js';
+import { startUp } from './prove-places.js';
+import type { Reach, StepContext } from './step-kind.js';
 
+const readingTime: Seconds = 0.1;
+/** The load's voltage and current, besides the places. */
+const usuallyRead = 2;
 /** How long what did not hold a point may take to come back. */
 const patience: Seconds = 10;
 
@@ -26,7 +32,25 @@ export const climbParameters = {
     'it ends where the voltage of the whole has fallen by this part of the open-circuit voltage',
     { above: 0, most: 0.5 },
   ).prefault('10 %'),
+  prove: z
+    .boolean()
+    .default(true)
+    .describe('Whether each module is unplugged once, to show which place is its own.'),
 };
+
+/** How long a climb takes, its proofs and all that is done by hand included; roughly. */
+export function climbDuration(
+  { points, dwell, readings, prove }: ClimbGiven,
+  { modules, passes }: Reach,
+): Seconds {
+  const places = passes === 1 ? modules : 1;
+  const look = dwell + readings * (usuallyRead + places) * readingTime;
+  const proofs = prove ? modules * (look + 2 * handTime + startUp) + passes * look : 0;
+  const moves = passes === 1 ? 0 : (passes + 1) * handTime;
+  return passes * points * look + proofs + moves;
+}
+
+type ClimbGiven = Pick<Climb, 'points' | 'dwell' | 'readings'> & { readonly prove: boolean };
 
 export interface Climb {
   readonly phase: 'share' | 'stack';

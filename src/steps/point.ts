@@ -109,7 +109,7 @@ export class Points {
     plan: PointPlan,
     point: number,
   ): Promise<Omit<PointSeen, 'last' | 'load'> & { readonly last: Seen }> {
-    const { clock, signal } = this.#context;
+    const { bench, clock, signal } = this.#context;
     const { current: set } = plan.set;
     const ends = plan.until ?? ((_seen, judged) => judged === 'dropped');
     const voltage = new RunningMoments();
@@ -120,7 +120,7 @@ export class Points {
     for (let sample = 1; ; sample += 1) {
       if (sample > 1) await clock.sleep(plan.every ?? stagger(sample), signal);
       const seen = await this.#sample(point, sample, plan);
-      const unread = unreadIn(seen, plan.set);
+      const unread = unreadIn(seen, plan, bench);
       this.#blind.count(unread);
       if (unread !== undefined) continue;
       voltage.add(seen.voltage);
@@ -202,12 +202,18 @@ function temperatureIn(taken: readonly Taken[]): Celsius | undefined {
   return Number.isNaN(celsius) ? undefined : celsius;
 }
 
-/** With a voltage set the current is the module's doing, so it must be seen as well as one that was set. */
+/**
+ * With a voltage set the current is the module's doing, so it must be seen as well as one that was set; and a
+ * temperature that is wanted guards the module.
+ */
 function unreadIn(
-  { voltage, current }: Pick<Seen, 'voltage' | 'current'>,
-  set: SetPoint,
-): 'voltage' | 'current' | undefined {
+  { voltage, current, temperature }: Seen,
+  { set, wanted }: PointPlan,
+  { thermometer }: StepContext['bench'],
+): 'voltage' | 'current' | 'temperature' | undefined {
   if (Number.isNaN(voltage)) return 'voltage';
   const flowing = set.current !== undefined || set.voltage !== undefined;
-  return flowing && Number.isNaN(current) ? 'current' : undefined;
+  if (flowing && Number.isNaN(current)) return 'current';
+  const looked = wanted?.temperature === true && thermometer !== undefined;
+  return looked && temperature === undefined ? 'temperature' : undefined;
 }

@@ -24,7 +24,7 @@ const tellable = 4;
 /** How far from its label a module's voltage may be before it is something else that is read. */
 const offLabel: Ratio = 0.25;
 /** What a supply takes to start. */
-const startUp: Seconds = 2;
+export const startUp: Seconds = 2;
 
 /**
  * Shows that what is read at a place comes from the module that is said to stand there, by unplugging one

@@ -4,12 +4,11 @@ import { formatQuantity, formatShare } from '../quantity/format-quantity.js';
 import type { Amperes, Seconds } from '../quantity/quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
 import { defineStep } from './define-step.js';
-import { climb, climbParameters } from './place-climb.js';
+import { climb, climbDuration, climbParameters } from './place-climb.js';
 import { passThrough } from './place-passes.js';
 import { Points } from './point.js';
 import { provePlaces } from './prove-places.js';
 
-const readingTime = 0.1;
 const day: Seconds = 24 * 3600;
 /** Nothing is read between two looks, so nothing guards the group meanwhile. */
 const longestBetween: Seconds = 60;
@@ -39,10 +38,6 @@ export const sharingLog = defineStep({
       above: 0,
       most: longestBetween,
     }).prefault('10 s'),
-    prove: z
-      .boolean()
-      .default(true)
-      .describe('Whether each module is unplugged once, to show which place is its own.'),
   }),
   measures: [],
   needs: { liveModule: true, operator: 'never', circuits: ['parallel'], taps: true },
@@ -53,7 +48,7 @@ export const sharingLog = defineStep({
   describe: ({ points, from, to, hold }) =>
     `${points} points from ${formatShare(from, 'current')} to ${formatShare(to, 'current')}, each module's current at each` +
     (hold > 0 ? `, held for ${formatQuantity(hold, 'time')}` : ''),
-  duration: ({ points, dwell, readings, hold }) => points * (dwell + readings * 3 * readingTime) + hold,
+  duration: (given, reach) => climbDuration(given, reach) + reach.passes * given.hold,
   async perform(given, context) {
     const { modules } = context.underTest;
     const proving: Amperes = provingShare * Math.min(...modules.map(({ rated }) => rated.current));

@@ -5,7 +5,6 @@ import type { Seconds } from '../quantity/quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
 import { defineStep } from './define-step.js';
 import { longestDwell } from './dwell.js';
-import { NoThermometerError } from './step-error.js';
 import { Soak } from './soaking.js';
 
 const day: Seconds = 24 * 3600;
@@ -44,6 +43,7 @@ export const soak = defineStep({
   }),
   measures: [],
   needs: { liveModule: true, operator: 'never' },
+  needsThermometer: ({ limit }) => limit !== undefined,
   references: ({ current }) => ({ current }),
   currents: ['current'],
   describe: (given) =>
@@ -51,7 +51,6 @@ export const soak = defineStep({
     (given.limit === undefined ? '' : `, not above ${formatQuantity(given.limit, 'temperature')}`),
   duration: (given) => given.for,
   async perform({ for: longest, limit, ...given }, context) {
-    if (limit !== undefined && context.bench.thermometer === undefined) throw new NoThermometerError(limit);
     const current = resolve(given.current, context.known);
     await new Soak(
       {

@@ -4,12 +4,11 @@ import { formatShare } from '../quantity/format-quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
 import { defineStep } from './define-step.js';
 import { requireIsolation } from './isolation-proved.js';
-import { climb, climbParameters } from './place-climb.js';
+import { climb, climbDuration, climbParameters } from './place-climb.js';
 import { passThrough } from './place-passes.js';
 import { Points } from './point.js';
 import { provePlaces } from './prove-places.js';
 
-const readingTime = 0.1;
 const rounding = 1e-9;
 
 export const stackCheck = defineStep({
@@ -19,20 +18,22 @@ export const stackCheck = defineStep({
     ...climbParameters,
     from: quantityOrShare('current', 'the first point', { least: 0 }).prefault('0 A'),
     to: quantityOrShare('current', 'the last point', { above: 0 }),
-    prove: z
-      .boolean()
-      .default(true)
-      .describe('Whether each module is unplugged once, to show which place is its own.'),
   }),
   measures: [],
-  needs: { liveModule: true, operator: 'never', circuits: ['series'], taps: true },
+  needs: {
+    liveModule: true,
+    operator: 'never',
+    circuits: ['series'],
+    after: ['isolation-check'],
+    taps: true,
+  },
   asks: ({ prove }) => prove,
   references: ({ from, to }) => ({ from, to }),
   currents: ['from', 'to'],
   rises: { from: 'from', to: 'to', mayBeLevel: true },
   describe: ({ points, from, to }) =>
     `${points} points from ${formatShare(from, 'current')} to ${formatShare(to, 'current')}, each module's voltage at each`,
-  duration: ({ points, dwell, readings }) => points * (dwell + readings * 3 * readingTime),
+  duration: (given, reach) => climbDuration(given, reach),
   async perform(given, context) {
     requireIsolation(context);
     const points = new Points(context);

@@ -1,6 +1,6 @@
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Celsius, Volts } from '../quantity/quantity.js';
+import type { Volts } from '../quantity/quantity.js';
 
 /** The person at the bench was asked for a quantity and never gave one. */
 export class AnswerNotUnderstoodError extends RailproofError {
@@ -48,20 +48,5 @@ export class TraceRisesError extends RailproofError {
     });
     this.from = from;
     this.to = to;
-  }
-}
-
-/** A soak must end at a temperature that nobody measures. */
-export class NoThermometerError extends RailproofError {
-  readonly code = 'NO_THERMOMETER';
-  readonly exitCode = exitCodes.stopped;
-  readonly limit: Celsius;
-
-  constructor(limit: Celsius) {
-    super(
-      `the soak shall end at ${formatQuantity(limit, 'temperature')}, and the bench has no thermometer to tell`,
-      { advice: "give the bench a thermometer, or leave out the soak's limit and stay with the module" },
-    );
-    this.limit = limit;
   }
 }

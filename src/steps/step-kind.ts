@@ -27,6 +27,8 @@ export interface StepKind<Parameters = unknown> {
     readonly operator: 'always' | 'never';
     /** The circuits it makes sense for; any when left out. */
     readonly circuits?: readonly Circuit[];
+    /** The kinds of step that must have been done before it. */
+    readonly after?: readonly string[];
     /** The voltage at each place of the circuit is read; where nothing else can, the operator moves the meter. */
     readonly taps?: true;
     /** What the drivers must say how to do, by role: `{ load: ['voltage-mode', 'set-voltage'] }`. */
@@ -36,6 +38,8 @@ export interface StepKind<Parameters = unknown> {
   };
   /** Whether, told so, it asks someone to act, on top of `needs.operator`. */
   asks?(parameters: Parameters): boolean;
+  /** Whether, told so, it can't be done where nothing measures the temperature. */
+  needsThermometer?(parameters: Parameters): boolean;
   /** Every quantity among the parameters that may refer to another, by parameter name. */
   references(parameters: Parameters): Readonly<Record<string, QuantityOrShare>>;
   /** The parameters among `references` that are currents the load will be set to. */
@@ -45,8 +49,15 @@ export interface StepKind<Parameters = unknown> {
   /** A sentence for the plan: `21 points from 0 A to 100 % of rated-current`. */
   describe(parameters: Parameters): string;
   /** A rough idea of how long it takes, for the time that remains. */
-  duration(parameters: Parameters): Seconds;
+  duration(parameters: Parameters, reach: Reach): Seconds;
   perform(parameters: Parameters, context: StepContext): Promise<void>;
+}
+
+/** How many modules there are, and how often a step that reads their places goes through its points. */
+export interface Reach {
+  readonly modules: number;
+  /** Once for each place where the operator moves the meter, else 1. */
+  readonly passes: number;
 }
 
 /** What a step is given to work with. */

@@ -26,6 +26,8 @@ export interface NurseryChange {
   readonly meter?: Partial<Driver>;
   /** What the meter answers to READ? whatever is at its probes; it is told which reading it is, from 1. */
   readonly meterReads?: string | ((count: number) => string);
+  /** The same, of the thermometer. */
+  readonly thermometerReads?: string | ((count: number) => string);
   readonly onInput?: InputListener;
   readonly onNotice?: (text: string) => void;
 }
@@ -76,9 +78,10 @@ export async function nursery(change: NurseryChange = {}): Promise<Nursery> {
         drivers,
         clock,
         connect: (_address, _driver, role) => {
+          const reads = { meter: change.meterReads, thermometer: change.thermometerReads }[role];
           const line =
-            role === 'meter' && change.meterReads !== undefined
-              ? stubborn(clock, change.meterReads)
+            reads !== undefined
+              ? stubborn(clock, reads)
               : opened.connect(role, driverAt(there, role as Post) ?? there.meter);
           lines.push(line);
           return Promise.resolve(line);
@@ -89,7 +92,7 @@ export async function nursery(change: NurseryChange = {}): Promise<Nursery> {
   };
 }
 
-/** A meter at the end of a line that reads what it is told to. */
+/** A meter, or a thermometer, at the end of a line that reads what it is told to. */
 function stubborn(clock: VirtualClock, reading: string | ((count: number) => string)): Connection {
   let count = 0;
   const answers: Readonly<Record<string, string>> = {
@@ -99,7 +102,7 @@ function stubborn(clock: VirtualClock, reading: string | ((count: number) => str
   };
   return new VirtualLine(clock, (message, at) => {
     const read = (): string => (typeof reading === 'string' ? reading : reading((count += 1)));
-    const answer = message === 'READ?' ? read() : answers[message];
+    const answer = message === 'READ?' || message === 'MEAS:TEMP?' ? read() : answers[message];
     return answer === undefined ? [] : [{ at: at + 0.02, bytes: Buffer.from(`${answer}\n`) }];
   });
 }

@@ -86,9 +86,10 @@ describe('what a step needs and does not find is told', () => {
     circuit: 'single' | 'parallel' | 'series' = 'parallel',
     bench: Bench = description,
     of: BenchDrivers = drivers,
+    modules: Parameters<typeof underTestOf>[1] = [k1, k2, k3],
   ): string[] => {
     const kind = { needs: { liveModule: true, operator: 'never', ...needs } } as StepKind;
-    return [...needProblems(step, kind, underTestOf(circuit, [k1, k2, k3]), bench, of)];
+    return [...needProblems(step, kind, underTestOf(circuit, modules), bench, of)];
   };
 
   it.each<[string, string[], readonly string[]]>([
@@ -125,6 +126,19 @@ describe('what a step needs and does not find is told', () => {
         group: { ...group, measuredBy: 'operator' },
       }),
       ['sharing-log: needs a meter, and the bench has none'],
+    ],
+    [
+      'nobody who moves probes in a stack that is not touch-safe',
+      problems(
+        { taps: true },
+        'series',
+        { ...description, group: { ...group, measuredBy: 'operator' } },
+        drivers,
+        [k1, k2, k3, named('K4', { rated: { voltage: 24, current: 4 } })],
+      ),
+      [
+        'sharing-log: a stack of 68 V is above the 60 V DC that are touch-safe, so nobody may move probes in it: use a scanner or a meter at each place',
+      ],
     ],
     [
       'operations and readings that drivers have',

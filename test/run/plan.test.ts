@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { makePlan, type Plan } from '../../src/run/plan.js';
 import { stepKinds } from '../../src/steps/index.js';
 import { nursery, type NurseryChange } from '../bench/nursery-bench.js';
+import { groupBench } from '../bench/group-bench.js';
 import { k1 } from '../steps/one-step.js';
 import { procedureOf } from './rehearsal.js';
 
@@ -71,6 +72,43 @@ describe('a plan', () => {
   });
 });
 
+describe('the time that a plan takes', () => {
+  const steps = ['sharing-log: { to: 4 A, points: 10, dwell: 1 s, readings: 5 }'];
+  const timeFor = async (measuredBy: 'scanner' | 'operator'): Promise<number> => {
+    const { description, drivers } = await groupBench({ measuredBy });
+    const procedure = { ...procedureOf(steps), circuit: 'parallel' } as const;
+    const [k2, k3] = ['K2', 'K3'].map((name) => ({ ...k1, name }));
+    if (k2 === undefined || k3 === undefined) throw new Error('three modules');
+    return makePlan(procedure, [k1, k2, k3], description, drivers, stepKinds).duration;
+  };
+
+  it('holds the plugs that are pulled, and the probes that are moved through as many passes as places', async () => {
+    const [atOnce, byHand] = [await timeFor('scanner'), await timeFor('operator')];
+    // Ten points of 3.5 s; four proofs, three of them with two hands at a plug.
+    expect(atOnce).toBeGreaterThan(35 + 3 * 2 * 10);
+    expect(atOnce).toBeLessThan(200);
+    expect(byHand).toBeGreaterThan(2 * atOnce - 100);
+    expect(byHand).toBeGreaterThan(3 * 25 + 3 * 2 * 10 + 4 * 10);
+  });
+});
+
+it('a stack is not begun by a procedure that never shows that its modules are isolated', async () => {
+  const { description, drivers } = await groupBench({ circuit: 'series' });
+  const plan = (...steps: string[]): Plan =>
+    makePlan(
+      { ...procedureOf(steps), circuit: 'series' },
+      [k1, { ...k1, name: 'K2' }, { ...k1, name: 'K3' }],
+      description,
+      drivers,
+      stepKinds,
+    );
+  const check = 'stack-check: { to: 2 A }';
+  expect(() => plan('open-circuit: {}', check)).toThrow(
+    'rehearsal.yaml:8:5: stack-check: there is no isolation-check before it, and it needs one',
+  );
+  expect(() => plan('isolation-check: {}', check)).not.toThrow();
+});
+
 describe('a plan is refused, at file, line and column, when', () => {
   it.each<[string, readonly string[], PlanChange, string]>([
     [
@@ -84,6 +122,12 @@ describe('a plan is refused, at file, line and column, when', () => {
       ['open-circuit: { for: 1 s }', 'load-ramp: { to: 9 A }'],
       {},
       'rehearsal.yaml:8:5: load-ramp.to: 9 A is more than the bench allows (8 A)',
+    ],
+    [
+      'a soak shall end at a temperature that nobody measures',
+      ['soak: { current: 4 A, limit: 60 °C }'],
+      {},
+      'rehearsal.yaml:7:5: soak: needs a thermometer, and the bench has none',
     ],
     [
       'a share comes to more than the load is rated for',

@@ -72,13 +72,17 @@ describe('a soak', () => {
     expect(there.the('notice')[0]?.text).toMatch(/^settled after 2\.\d\d min$/);
   });
 
-  it('refuses a limit of temperature that nobody can see', async () => {
-    const there = await stage({ ...bench, file: 'nursery' });
-    await expect(there.perform('soak', { current: '4 A', limit: '60 °C' })).rejects.toMatchObject({
-      code: 'NO_THERMOMETER',
-      exitCode: 3,
+  it('does not go on where the temperature can not be read any more', async () => {
+    const there = await stage({
+      ...bench,
+      thermometerReads: (count) => (count < 40 ? '31.2' : '9.91E37'),
     });
-    expect(there.the('input')).toEqual([]);
+    await expect(there.perform('soak', { current: '4 A', limit: '60 °C' })).rejects.toMatchObject({
+      code: 'GUARD_TRIPPED',
+      guard: 'no-reading',
+      message: '3 times in a row the temperature could not be read',
+    });
+    expect(temperaturesOf(there).length).toBeGreaterThan(5);
   });
 
   it('ends where the limit comes down on the current as the module warms, and the module comes back', async () => {
