@@ -33,12 +33,13 @@ const ofRatedCurrent = 0.95;
  * rated current counts less 5 %.
  */
 export function ceilingsOf(bench: Bench, drivers: BenchDrivers): Ceilings {
-  const { load, meter } = drivers;
+  const { load, meter, scanner } = drivers;
   return {
     voltage: strictest(
       { value: bench.limits.voltage, setBy: 'the bench' },
       rating(load.ratings.voltage, "the load's rating"),
       rating(meter?.ratings.voltage, "the meter's rating"),
+      rating(scanner?.ratings.voltage, "the scanner's rating"),
     ),
     current: strictest({ value: bench.limits.current, setBy: 'the bench' }, lessRoom(load.ratings.current)),
     power: strictest(

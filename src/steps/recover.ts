@@ -19,7 +19,7 @@ export async function comeBack(
   least: Volts,
   patience: Seconds,
 ): Promise<CameBack> {
-  const { bench, journal, operator, clock, step } = context;
+  const { bench, journal, operator, clock, step, underTest } = context;
   const unloaded = clock.now();
   await bench.load.inputOff();
   const byItself = await waitForVoltage(points, unloaded, least, patience);
@@ -43,7 +43,10 @@ export async function comeBack(
   }
   await askToDo(context, {
     name: 'cycle-input',
-    text: 'The module has switched itself off and stays off. Unplug it, wait until its lamp is out (half a minute), plug it in again.',
+    text:
+      underTest.modules.length === 1
+        ? 'The module has switched itself off and stays off. Unplug it, wait until its lamp is out (half a minute), plug it in again.'
+        : 'What is connected has switched itself off and stays off. Unplug all modules, wait until their lamps are out (half a minute), plug them in again.',
     act: 'cycle input',
   });
   const cycled = await waitForVoltage(points, clock.now(), least, patience);

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { ceilingsOf } from '../../src/bench/ceilings.js';
+import { groupBench } from './group-bench.js';
 import { nursery } from './nursery-bench.js';
 
 describe('what may never be exceeded on a bench', () => {
@@ -29,6 +30,11 @@ describe('what may never be exceeded on a bench', () => {
     const { description, drivers } = await nursery({ meter: { ratings: { voltage: 30 } } });
     expect(ceilingsOf(description, drivers).voltage).toEqual({ value: 30, setBy: "the meter's rating" });
     expect(ceilingsOf(description, { load: drivers.load }).voltage.setBy).toBe('the bench');
+  });
+
+  it('is what the scanner stands, all of whose relays see the whole', async () => {
+    const { description, drivers } = await groupBench({ drivers: { scanner: { ratings: { voltage: 42 } } } });
+    expect(ceilingsOf(description, drivers).voltage).toEqual({ value: 42, setBy: "the scanner's rating" });
   });
 
   it("is the bench's limit where the drivers promise nothing", async () => {
