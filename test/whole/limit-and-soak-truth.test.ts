@@ -11,8 +11,8 @@ import { runQuietly } from './run-quietly.js';
 
 /** Few in the ordinary run; as many as RAILPROOF_SEEDS says, of which the soaks, being long, take a third. */
 const asked = process.env['RAILPROOF_SEEDS'];
-const seeds = Number(asked ?? 10);
-const soaks = asked === undefined ? 5 : Math.ceil(seeds / 3);
+const seeds = Number(asked ?? 6);
+const soaks = asked === undefined ? 4 : Math.ceil(seeds / 3);
 const folder = mkdtempSync(join(tmpdir(), 'railproof-limit-'));
 
 afterAll(() => {
