@@ -8,8 +8,10 @@ import { groupAnswer } from './group-answer.js';
 import { earthAnswer, moduleAnswer } from './module-answer.js';
 import { endedHow, type Result } from './result.js';
 
-/** What the technician came for, in a few sentences: what does not conform, what to do,
- * and why. Empty when nothing was found. */
+/**
+ * What the technician came for, in a few sentences: what does not conform, what to do, and why. Empty when
+ * nothing was found.
+ */
 export function answer(result: Result): readonly string[] {
   const single = result.header.circuit === 'single';
   const [first, ...reasons] = advice(result);
@@ -18,6 +20,7 @@ export function answer(result: Result): readonly string[] {
     ...(first === undefined ? [] : [first]),
     ...(single ? [...reasons, ...moduleAnswer(result.findings)] : groupAnswer(result)),
     ...earthAnswer(result.findings),
+    ...whoDecides(result),
     ...sinceBaseline(result),
   ];
 }
@@ -30,9 +33,16 @@ function advice(result: Result): readonly string[] {
   const current = Number(recommended.value);
   const it = { single: 'it', parallel: 'the group', series: 'the string' }[result.header.circuit];
   const what =
-    current > 0 ? `load ${it} continuously with up to ${roundedDown(current)}` : `do not load ${it}`;
+    current > 0 ? `${loaded(it, result.outcome)} with up to ${roundedDown(current)}` : `do not load ${it}`;
   const sentence = endedHow(result).how === 'completed' ? what : `as far as the run went, ${what}`;
   return [`${capitalised(sentence)}.`, why(usable)];
+}
+
+/** Who reads one line only must not take what is not accepted for something to be used. */
+function loaded(it: string, outcome: Result['outcome']): string {
+  return outcome === 'does-not-conform'
+    ? `by its limits alone ${it} could be loaded continuously`
+    : `load ${it} continuously`;
 }
 
 /** What may be nothing is no delivery: then only the reason is told. */
@@ -59,6 +69,14 @@ function verdict({ decisions, outcome }: Result): readonly string[] {
   if (outcome !== 'does-not-conform') return [];
   const names = decisions.flatMap((one) => (one.outcome === outcome ? [one.finding] : []));
   return [`It does not conform: ${[...new Set(names)].join(', ')}.`];
+}
+
+/** A measurement can't say that a module whose earth was worked on may be used. */
+function whoDecides({ header, findings }: Result): readonly string[] {
+  if (!header.procedure.cautions.includes('earth-link-removed') || findings.length === 0) return [];
+  return [
+    'Its earth was worked on: whether it may be used so is for local codes and a licensed person to decide.',
+  ];
 }
 
 /** To three digits, and never up: a recommendation must not grow by being written. */

@@ -80,7 +80,20 @@ function standing({ modules }: Result['header'], findings: readonly Finding[]): 
       ? []
       : [
           sentence(`The 0 V of ${top} floats ${inOneLine(float)} above that of the string`, float.note, '; '),
+          ...unknownIsolation(modules),
         ]),
+  ];
+}
+
+/** Of all that float; the lowest does not. */
+function unknownIsolation(modules: Result['header']['modules']): readonly string[] {
+  const names = modules
+    .slice(1)
+    .flatMap(({ name, outputIsolation }) => (outputIsolation === 'unknown' ? [name] : []));
+  if (names.length === 0) return [];
+  const outputs = names.length === 1 ? 'the output' : 'the outputs';
+  return [
+    `What ${outputs} of ${names.join(' and ')} can withstand to earth is unknown: find that out before ${names.length === 1 ? 'it floats' : 'they float'} in use.`,
   ];
 }
 

@@ -60,7 +60,7 @@ describe('the answer', () => {
     const findings = [recommended(4), usable];
     expect(answer({ ...resultOf(), findings, decisions, outcome: 'does-not-conform' }).slice(0, 2)).toEqual([
       'It does not conform: droop-resistance.',
-      'Load it continuously with up to 4.00 A.',
+      'By its limits alone it could be loaded continuously with up to 4.00 A.',
     ]);
   });
 
@@ -86,6 +86,14 @@ describe('the answer', () => {
       inWords(`earth-relation-of-${name}`, 'isolated', { step: 1 }),
     );
     expect(answerTo(...alike)).toEqual(['Each output of K1, K2 and K3 is isolated from earth.']);
+  });
+
+  it('leaves it to those who may decide whether a module without its earth link is used', () => {
+    const result = resultOf();
+    const procedure = { ...result.header.procedure, cautions: ['earth-link-removed'] };
+    const findings = [inWords('earth-relation', 'isolated', { step: 1 })];
+    const sentences = answer({ ...result, header: { ...result.header, procedure }, findings, decisions: [] });
+    expect(sentences.at(-1)).toMatch(/for local codes and a licensed person to decide\.$/);
   });
 
   it('says what flows into a short circuit and how warm the module gets', () => {

@@ -91,6 +91,7 @@ describe('the answer about a stack', () => {
       'The string holds 3.500 ± 0.034 A.',
       'It gives 36.80 ± 0.36 V with no load.',
       'The 0 V of K3 floats 24.50 ± 0.24 V above that of the string; its output then stands at 36.8 V.',
+      'What the outputs of K2 and K3 can withstand to earth is unknown: find that out before they float in use.',
       'The weakest is K2: it collapses at 3.60 A.',
     ]);
   });

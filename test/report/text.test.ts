@@ -85,7 +85,7 @@ describe('the report for a terminal', () => {
     const findings = result.findings.map((one) =>
       one.name === 'recommended-current' ? { ...one, value } : one,
     );
-    expect(plain({ ...result, findings })).toContain(`Load it continuously with up to ${written}.`);
+    expect(plain({ ...result, findings })).toContain(`continuously with up to ${written}.`);
   });
 
   it('says not to load a module that delivers nothing', () => {
