@@ -19,7 +19,9 @@ export const benchSchema: z.ZodType<Bench> = z
         scanner: place
           .describe('A scanner that puts the meter across the places of a group.')
           .exactOptional(),
-        thermometer: place.describe('A thermometer that touches the module.').exactOptional(),
+        thermometer: place
+          .describe('A thermometer that touches the module, or the first of several.')
+          .exactOptional(),
       })
       .describe('The instruments, by their part in the work.'),
     leads: z

@@ -3,6 +3,7 @@ import type { Group } from './bench.js';
 import { choice, count, quantity } from './building-blocks.js';
 import { camelKeys } from './camel-keys.js';
 import { instrumentPlace } from './instrument-place.js';
+import type { Simulation } from './simulation-section.js';
 import type { Complaint } from './yaml-document.js';
 
 const channel = (description: string) => count(description, { least: 0, most: 9999 });
@@ -43,8 +44,9 @@ export const groupSchema: z.ZodType<Group> = camelKeys(
 export function* groupProblems(bench: {
   readonly group?: Group;
   readonly instruments: Readonly<Record<string, unknown>>;
+  readonly simulation?: Pick<Simulation, 'circuit' | 'modules'>;
 }): Generator<Complaint> {
-  const { group, instruments } = bench;
+  const { group, instruments, simulation } = bench;
   const { scanner, meter } = instruments;
   if (scanner !== undefined && group?.measuredBy !== 'scanner') {
     const message =
@@ -59,6 +61,7 @@ export function* groupProblems(bench: {
     yield { path: by, message: 'there is no scanner among the instruments' };
   if (group.measuredBy !== 'meters' && meter === undefined)
     yield { path: by, message: `${group.measuredBy} needs a meter among the instruments` };
+  if (simulation !== undefined) yield* forgottenBallasts(group, simulation);
   const used = new Map<number, string>();
   if (group.outputChannel !== undefined) used.set(group.outputChannel, 'output-channel');
   for (const [index, place] of group.places.entries()) {
@@ -77,5 +80,18 @@ export function* groupProblems(bench: {
       yield { path: [...path, 'channel'], message: `channel ${place.channel} is that of ${other} already` };
     }
     used.set(place.channel, `place ${index + 1}`);
+  }
+}
+
+/** The simulation may have another ballast than the bench knows of, but one that is left out is a slip. */
+function* forgottenBallasts(
+  { places }: Group,
+  { circuit, modules }: Pick<Simulation, 'circuit' | 'modules'>,
+): Generator<Complaint> {
+  if (circuit !== 'parallel') return;
+  for (const [index, { name, ballast }] of modules.entries()) {
+    if (places[index]?.ballast === undefined || ballast > 0) continue;
+    const message = `place ${index + 1} of the group has a ballast, and 'ballast' of ${name} is missing or none: what is really there?`;
+    yield { path: ['simulation', 'modules', index], message };
   }
 }

@@ -133,6 +133,23 @@ describe('one mistake is one line, at its place', () => {
     ]);
   });
 
+  it('a ballast that the simulation has left out, at the module without it', () => {
+    const modules = ['K1', 'K2'].map(
+      (name) => `
+    - name: ${name}
+      open-circuit-voltage: 15.2 V
+      droop-resistance: 18 mΩ
+      limit: { style: hiccup, current: 5.3 A }`,
+    );
+    const text = `${scanned}simulation:\n  circuit: parallel\n  modules:${modules.join('\n      ballast: 50 mΩ')}\n`;
+    expect(problemsOf(() => parseBench(text, 'bench.yaml'))).toEqual([
+      "bench.yaml:25:7: simulation.modules.1: place 2 of the group has a ballast, and 'ballast' of K2 is missing or none: what is really there?",
+    ]);
+    expect(parseBench(`${text}      ballast: 47 mΩ\n`, 'bench.yaml').simulation?.modules[1]?.ballast).toBe(
+      0.047,
+    );
+  });
+
   it('a meter that should be read through a scanner, or moved by hand, and is not there', () => {
     const text = changed(
       scanned,
