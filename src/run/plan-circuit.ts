@@ -33,13 +33,14 @@ export function* circuitProblems({ circuit, modules }: UnderTest, bench: Bench):
   if (circuit !== 'single' && modules.length < 2) {
     yield `the procedure is for modules in ${circuit}; give --module for each of them, in the order of the circuit`;
   }
-  if (circuit === 'single') return;
   const { group, simulation } = bench;
-  if (group !== undefined && group.places.length !== modules.length) {
-    yield `${modules.length} modules were given and the bench's group has ${group.places.length} places`;
+  const places = group?.places.length;
+  if (circuit !== 'single' && modules.length > 1 && places !== undefined && places !== modules.length) {
+    yield `${modules.length} modules were given and the bench's group has ${places} places`;
   }
   if (simulation !== undefined && simulation.circuit !== circuit) {
-    yield `the procedure is for modules in ${circuit} and the bench simulates a ${simulation.circuit} circuit`;
+    const what = circuit === 'single' ? 'one module' : `modules in ${circuit}`;
+    yield `the procedure is for ${what} and the bench simulates a ${simulation.circuit} circuit`;
   }
 }
 

@@ -42,7 +42,12 @@ describe('what is under test', () => {
 describe('modules that do not fit are told', () => {
   it.each<[string, Parameters<typeof underTestOf>, Bench, readonly string[]]>([
     ['a group that fits', ['parallel', [k1, k2, k3]], description, []],
-    ['one module on a bench with a group', ['single', [k1]], description, []],
+    [
+      'one module on a bench with a group',
+      ['single', [k1]],
+      description,
+      ['the procedure is for one module and the bench simulates a parallel circuit'],
+    ],
     [
       'a module given twice',
       ['parallel', [k1, k2, k1]],
