@@ -48,10 +48,10 @@ function decideQuantity(
   // A least value can show that there is enough, and that there is too much, but neither of their opposites.
   const proven = kind === 'at-least' ? 'conforms' : 'does-not-conform';
   if (finding.bound === 'least' && shown.outcome !== proven)
-    return undecided(name, requirement, 'it may be more: no limit was met');
+    return undecided(name, requirement, 'it may be more: it is a least value');
   // A limit that is itself only a least one leaves the opposite open.
   if (limit.bound === 'least' && shown.outcome === proven)
-    return undecided(name, requirement, 'what it refers to may be more: no limit was met then');
+    return undecided(name, requirement, 'what it refers to may be more: that is a least value');
   return {
     finding: name,
     requirement,

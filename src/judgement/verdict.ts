@@ -101,13 +101,13 @@ function judgeBounds(
   if (before.bound === undefined && after.bound === undefined) return undefined;
   if (before.bound !== undefined && after.bound !== undefined) {
     return outcome === 'conforms'
-      ? told(verdictOf.conforms, outcome, 'as far as both runs went: neither met a limit')
-      : told('cannot-tell', 'undecided', 'neither run met a limit, and they did not go equally far');
+      ? told(verdictOf.conforms, outcome, 'as far as both runs went: both are least values')
+      : told('cannot-tell', 'undecided', 'both are least values, and the runs did not go equally far');
   }
   const certain = before.bound === undefined ? difference > 0 : difference < 0;
   if (outcome === 'does-not-conform' && certain) return told('changed', outcome);
   const side = before.bound === undefined ? 'this time' : 'in the earlier record';
-  return told('cannot-tell', 'undecided', `it may be more: no limit was met ${side}`);
+  return told('cannot-tell', 'undecided', `it may be more: ${side} it is a least value`);
 }
 
 function judgeSame(before: Comparable, after: Comparable): Judged {

@@ -103,7 +103,7 @@ describe('a least value, of which no limit was met', () => {
     const one = compared(amps(before, 0.03, was), amps(after, 0.04, is), share(0.05));
     expect(one.verdict).toBe(verdict);
     expect(one.probability).toBeNull();
-    if (verdict !== 'changed') expect(one.note).toMatch(/met/);
+    if (verdict !== 'changed') expect(one.note).toMatch(/least value/);
   });
 });
 

@@ -127,7 +127,7 @@ describe('a requirement on a finding', () => {
     const decision = decide(requirement, [least]);
     expect(decision.outcome).toBe(outcome);
     if (outcome !== 'undecided') return;
-    expect(decision).toMatchObject({ probability: null, note: 'it may be more: no limit was met' });
+    expect(decision).toMatchObject({ probability: null, note: 'it may be more: it is a least value' });
   });
 
   it('is decided where the reference is none of ours, as far as it goes', () => {
