@@ -31,8 +31,6 @@ export interface SettlingFit {
   readonly timeConstantUncertainty: number;
   /** Of settled, start and timeConstant, in this order. */
   readonly covariance: readonly [Triple, Triple, Triple];
-  /** A matrix that times its transpose is the covariance; what predicts keeps its digits by it. */
-  readonly covarianceRoot: readonly [Triple, Triple, Triple];
   readonly startTime: number;
   /** Standard deviation of the residuals, n − 3 in the denominator. */
   readonly residualDeviation: number;
@@ -80,23 +78,6 @@ export function fitSettling(
   );
 }
 
-/**
- * The fitted curve at one time, with the standard uncertainty of the mean curve there: no scatter of a
- * further single reading is added. Infinity gives the settled value.
- */
-export function predictSettling(
-  fit: SettlingFit,
-  t: number,
-): { readonly value: number; readonly uncertainty: number } {
-  const passed = (t - fit.startTime) / fit.timeConstant;
-  const left = Math.exp(-passed);
-  const toGo = fit.start - fit.settled;
-  const byTimeConstant = left === 0 ? 0 : (toGo * left * passed) / fit.timeConstant;
-  if (left === Infinity) return { value: fit.settled + toGo * left, uncertainty: Infinity };
-  const sensitivities = [-Math.expm1(-passed), left, byTimeConstant] as const;
-  return { value: fit.settled + toGo * left, uncertainty: spreadOf(sensitivities, fit.covarianceRoot) };
-}
-
 function described(
   data: SettlingPoints,
   curve: CurveOfRate,
@@ -136,7 +117,6 @@ function described(
     timeConstant,
     timeConstantUncertainty: Math.hypot(...root[2]),
     covariance,
-    covarianceRoot: root,
     startTime,
     residualDeviation,
     residualCorrelation: residualCorrelation(data, curve),
@@ -179,10 +159,4 @@ function product(one: Triple, other: Triple): number {
 
 function timesAll(one: Triple, rows: readonly [Triple, Triple, Triple]): Triple {
   return [product(one, rows[0]), product(one, rows[1]), product(one, rows[2])];
-}
-
-function spreadOf(sensitivities: Triple, root: readonly [Triple, Triple, Triple]): number {
-  const along = (axis: 0 | 1 | 2) =>
-    sensitivities[0] * root[0][axis] + sensitivities[1] * root[1][axis] + sensitivities[2] * root[2][axis];
-  return Math.hypot(along(0), along(1), along(2));
 }
