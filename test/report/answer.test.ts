@@ -48,6 +48,15 @@ describe('the answer', () => {
     expect(answerTo(recommended(3.9999), usable)[0]).toBe('Load it continuously with up to 3.99 A.');
     expect(answerTo(recommended(0), usable)[0]).toBe('Do not load it.');
     expect(answerTo(usable)).toEqual([]);
+    const warm = measured('usable-current', 'current', 2, [promised('between', 1.2)], {
+      step: 2,
+      note: 'warm it drops out at 4.00 A, after 19 min; no soak has shown what it holds when warm: soak it at less',
+    });
+    // Two amperes ± more than two are no delivery.
+    expect(answerTo(recommended(0), warm)).toEqual([
+      'Do not load it.',
+      'Warm it drops out at 4.00 A, after 19 min; no soak has shown what it holds when warm: soak it at less.',
+    ]);
   });
 
   it('begins with what does not conform, so that nobody reads on and misses it', () => {
