@@ -8,6 +8,8 @@ export default defineConfig({
     restoreMocks: true,
     unstubEnvs: true,
     testTimeout: 20_000,
+    // Whole runs are made beforehand, and a busy machine takes its time.
+    hookTimeout: 60_000,
     reporters: process.env['CI'] ? ['default', ['json', { outputFile: '.vitest-result.json' }]] : ['default'],
   },
 });

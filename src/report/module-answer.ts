@@ -62,9 +62,15 @@ function shortCircuit(findings: readonly Finding[]): readonly string[] {
   return [`Into a short circuit it gives ${inOneLine(current)}${style}.`];
 }
 
+/** A soak that only watched the voltage shows that it settled, and must not pass for one that felt the case. */
+function unmeasuredWarmth(findings: readonly Finding[]): readonly string[] {
+  const soaked = findingNamed(findings, 'thermal-drift') !== undefined;
+  return soaked ? ['How warm it got was not measured: only its voltage was watched.'] : [];
+}
+
 function warming(findings: readonly Finding[]): readonly string[] {
   const rise = findingNamed(findings, 'temperature-rise');
-  if (typeof rise?.value !== 'number') return [];
+  if (typeof rise?.value !== 'number') return unmeasuredWarmth(findings);
   const least = rise.bound === 'least' ? 'at least ' : '';
   return [`It warms by ${least}${inOneLine(rise)}: ${rise.note}.`];
 }

@@ -1,5 +1,5 @@
 import { analyse } from '../analysis/analyse.js';
-import { EvidenceCollector } from '../analysis/evidence.js';
+import { type Evidence, EvidenceCollector } from '../analysis/evidence.js';
 import { type Decision, judge, overall } from '../judgement/judge.js';
 import { checkJournal, type Integrity, readJournal } from '../record/journal-reader.js';
 import { runFolderAt } from '../record/run-folder.js';
@@ -31,7 +31,7 @@ export function understand(path: string): Result {
     integrity,
     findings,
     decisions,
-    outcome: outcomeOf(integrity, decisions),
+    outcome: outcomeOf(integrity, evidence, decisions),
   };
 }
 
@@ -41,8 +41,16 @@ function changedHeader({ lines, bytes }: Integrity): Integrity {
   return { kind: 'damaged', lines, bytes, line: 1, problem };
 }
 
-/** Nobody knows what the missing part of a record would have shown, so it can't say that a module conforms. */
-function outcomeOf(integrity: Integrity, decisions: readonly Decision[]): Result['outcome'] {
+/**
+ * Nobody knows what the missing part of a record, or of a run that was stopped, would have shown, so it can't
+ * say that a module conforms.
+ */
+function outcomeOf(
+  integrity: Integrity,
+  { ended }: Evidence,
+  decisions: readonly Decision[],
+): Result['outcome'] {
   const outcome = overall(decisions);
-  return integrity.kind !== 'whole' && outcome === 'conforms' ? 'undecided' : outcome;
+  const whole = integrity.kind === 'whole' && ended?.how === 'completed';
+  return !whole && outcome === 'conforms' ? 'undecided' : outcome;
 }

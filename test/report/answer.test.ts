@@ -121,6 +121,13 @@ describe('the answer', () => {
     ]);
   });
 
+  it('says that warmth was not measured where a soak had no thermometer', () => {
+    const drift = measured('thermal-drift', 'voltage-rate', -0.001, [promised('the meter', 0.001)], {
+      step: 2,
+    });
+    expect(answerTo(drift)).toEqual(['How warm it got was not measured: only its voltage was watched.']);
+  });
+
   it('says what moved since the baseline, also where nothing is recommended', () => {
     const result = { ...resultOf(), decisions: [], outcome: 'not-judged' } as const;
     const baseline = aBaseline();

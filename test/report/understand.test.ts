@@ -5,7 +5,8 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { analyse } from '../../src/analysis/analyse.js';
 import { EvidenceCollector } from '../../src/analysis/evidence.js';
 import { judge, overall } from '../../src/judgement/judge.js';
-import type { TimedEvent } from '../../src/record/journal-event.js';
+import type { JournalEvent, TimedEvent } from '../../src/record/journal-event.js';
+import { JournalWriter } from '../../src/record/journal-writer.js';
 import { resultAsJson } from '../../src/report/json.js';
 import { endedHow, type Result } from '../../src/report/result.js';
 import { plainStyle } from '../../src/report/style.js';
@@ -118,6 +119,26 @@ describe('a record made on the simulated bench', () => {
       expect(endedHow(cut)).toEqual({ how: 'cut-off', reason: null });
       expect(resultAsText(cut, plainStyle)).toContain('CUT OFF');
     }
+  });
+
+  it('that was stopped never conforms, however good it looks so far', () => {
+    const { path, lines } = recordOf('hiccup');
+    const stoppedPath = join(runs, 'stopped');
+    mkdirSync(stoppedPath);
+    copyFileSync(join(path, 'run.json'), join(stoppedPath, 'run.json'));
+    const journal = new JournalWriter(join(stoppedPath, 'journal.jsonl'), () => 0);
+    for (const line of lines.slice(0, -1)) {
+      const fields = Object.entries(JSON.parse(line) as object).filter(
+        ([key]) => key !== 'seal' && key !== 't',
+      );
+      journal.append(Object.fromEntries(fields) as unknown as JournalEvent);
+    }
+    journal.append({ event: 'ended', how: 'stopped', reason: 'Ctrl-C', status: 3 });
+    journal.close();
+    const stopped = understand(stoppedPath);
+    expect(stopped.integrity.kind).toBe('whole');
+    expect(stopped.decisions.map(({ outcome }) => outcome)).toEqual(['conforms']);
+    expect(stopped.outcome).toBe('undecided');
   });
 
   it('with a reading changed afterwards: is called damaged, and believed up to there', () => {
