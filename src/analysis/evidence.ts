@@ -10,7 +10,7 @@ import type {
   TimedEvent,
 } from '../record/journal-event.js';
 import type { RunHeader } from '../record/run-header.js';
-import { RunningMoments } from '../statistics/running-moments.js';
+import { momentsAt, RunningMoments } from '../statistics/running-moments.js';
 
 /** What a journal amounts to: its points, each boiled down to a few numbers, however many readings it had. */
 export interface Evidence {
@@ -194,14 +194,6 @@ export class EvidenceCollector {
   #isMetered(): boolean {
     return this.#header.bench.voltageFrom === 'meter-at-module' && this.#meterVoltage !== undefined;
   }
-}
-
-function momentsAt(taps: Map<string, RunningMoments>, at: string): RunningMoments {
-  const known = taps.get(at);
-  if (known !== undefined) return known;
-  const fresh = new RunningMoments();
-  taps.set(at, fresh);
-  return fresh;
 }
 
 function addIfValue(moments: RunningMoments, value: number): void {

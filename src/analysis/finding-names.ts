@@ -1,3 +1,4 @@
+import { earthRelations } from '../circuit/earth-relation.js';
 import type { Dimension } from '../quantity/quantity.js';
 
 /** Every finding there can be, and what it measures. A name that ends in `*` stands for one per module. */
@@ -34,6 +35,13 @@ export const findingNames = {
   /** Whatever the operator was asked for; one that is a quantity carries its own unit. */
   'answer-of-*': 'word',
 } as const satisfies Record<string, Dimension | 'word'>;
+
+/** What a finding that is a word can be, where that does not depend on how modules are called. */
+export const findingWords: Readonly<Record<string, readonly string[]>> = {
+  'limit-style': ['constant-current', 'foldback', 'constant-power', 'hiccup', 'latch-off'],
+  'earth-relation': earthRelations,
+  'earth-relation-of-*': earthRelations,
+};
 
 /** What a finding of that name measures; undefined for a name that is none of ours. */
 export function dimensionOfFinding(name: string): Dimension | 'word' | undefined {

@@ -1,5 +1,6 @@
 /** How an output stands to earth: tied to it, cut off from it, neither, or nobody can tell. */
-export type EarthRelation = 'bonded' | 'isolated' | 'leaky' | 'undetermined';
+export const earthRelations = ['bonded', 'isolated', 'leaky', 'undetermined'] as const;
+export type EarthRelation = (typeof earthRelations)[number];
 
 /** In Ω. */
 export interface EarthThresholds {

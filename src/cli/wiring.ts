@@ -1,6 +1,6 @@
 import { fileURLToPath } from 'node:url';
 import { dirname, sep } from 'node:path';
-import { findingNames } from '../analysis/finding-names.js';
+import { findingNames, findingWords } from '../analysis/finding-names.js';
 import type { Clock } from '../clock/clock.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { realClock } from '../clock/real-clock.js';
@@ -29,7 +29,7 @@ export function recordedPath(path: string): string {
   return path.startsWith(root) ? path.slice(root.length).split(sep).join('/') : path;
 }
 
-export const vocabulary = { stepKinds, findings: findingNames };
+export const vocabulary = { stepKinds, findings: findingNames, words: findingWords };
 
 /** The driver of each post of a bench, the load's first. */
 export type DriverFiles = readonly { readonly post: Post; readonly file: FileRead<Driver> }[];

@@ -3,11 +3,9 @@ import { QuantityError, readQuantityOrAnyShare } from '../quantity/parse-quantit
 import type { Dimension } from '../quantity/quantity.js';
 import { shown } from '../quantity/shown-text.js';
 import { checkValue } from './check-value.js';
-import { namePattern } from './name-pattern.js';
 import { didYouMean } from '../quantity/nearest.js';
-import { found } from './plain-words.js';
 import type { Criterion, Requirement } from './procedure.js';
-import { findingDimension, type Vocabulary } from './vocabulary.js';
+import { findingDimension, readWord, type Vocabulary } from './vocabulary.js';
 import type { Complaint } from './yaml-document.js';
 
 /** A criterion as written. What its value may be depends on the finding, so it is read afterwards. */
@@ -51,7 +49,7 @@ export function readCriterion(
   if (form === undefined || more.length > 0) {
     return [{ path, message: 'a criterion has exactly one of at-least, at-most, is' }];
   }
-  const requirement = readRequirement(form, criterion[form], finding, dimension);
+  const requirement = readRequirement(form, criterion[form], { finding, dimension, vocabulary });
   if (typeof requirement === 'string') return [{ path: [...path, form], message: requirement }];
   return { finding, requirement };
 }
@@ -59,13 +57,16 @@ export function readCriterion(
 function readRequirement(
   form: (typeof forms)[number],
   value: unknown,
-  finding: string,
-  dimension: Dimension | 'word',
+  {
+    finding,
+    dimension,
+    vocabulary,
+  }: { finding: string; dimension: Dimension | 'word'; vocabulary: Vocabulary },
 ): Requirement | string {
   if (dimension === 'word') {
     if (form !== 'is') return `${finding} is a word; write is: in place of ${form}:`;
-    if (typeof value === 'string' && namePattern.test(value)) return { kind: 'is', word: value };
-    return `${found(value)}; a word is needed`;
+    const read = readWord(value, finding, vocabulary);
+    return 'word' in read ? { kind: 'is', word: read.word } : read.problem;
   }
   if (form === 'is') return `${finding} is a quantity; write at-least: or at-most: in place of is:`;
   try {

@@ -3,12 +3,11 @@ import { didYouMean } from '../quantity/nearest.js';
 import type { Dimension } from '../quantity/quantity.js';
 import { shown } from '../quantity/shown-text.js';
 import { checkValue } from './check-value.js';
-import { namePattern } from './name-pattern.js';
 import { found } from './plain-words.js';
 import { errorDimension } from './reading-dimensions.js';
 import type { Allowed, Expected, ToleranceEntry } from './tolerance.js';
 import { toleranceEntrySchema } from './tolerance-schema.js';
-import { familyOrFindingDimension, type Vocabulary } from './vocabulary.js';
+import { familyOrFindingDimension, readWord, type Vocabulary } from './vocabulary.js';
 import type { Complaint } from './yaml-document.js';
 
 const forms = ['within', 'same', 'becomes'] as const;
@@ -31,7 +30,7 @@ export function readToleranceEntry(
   const [form, ...more] = forms.filter((each) => Object.hasOwn(entry, each));
   if (form === undefined || more.length > 0)
     return [{ path, message: 'a finding has exactly one of within, same, becomes' }];
-  const expected = readExpected(form, entry[form], finding, dimension);
+  const expected = readExpected(form, entry[form], { finding, dimension, vocabulary });
   return typeof expected === 'string'
     ? [{ path: [...path, form], message: expected }]
     : { finding, expected };
@@ -40,8 +39,11 @@ export function readToleranceEntry(
 function readExpected(
   form: (typeof forms)[number],
   value: unknown,
-  finding: string,
-  dimension: Dimension | 'word',
+  {
+    finding,
+    dimension,
+    vocabulary,
+  }: { finding: string; dimension: Dimension | 'word'; vocabulary: Vocabulary },
 ): Expected | string {
   if (dimension !== 'word') {
     return form === 'within'
@@ -50,8 +52,8 @@ function readExpected(
   }
   if (form === 'within') return `${finding} is a word; write same: or becomes: in place of within:`;
   if (form === 'same') return { kind: 'same' };
-  if (typeof value === 'string' && namePattern.test(value)) return { kind: 'becomes', word: value };
-  return `${found(value)}; a word is needed`;
+  const read = readWord(value, finding, vocabulary);
+  return 'word' in read ? { kind: 'becomes', word: read.word } : read.problem;
 }
 
 function readWithin(value: unknown, dimension: Dimension): Expected | string {

@@ -1,11 +1,17 @@
 import type { z } from 'zod';
+import { didYouMean } from '../quantity/nearest.js';
 import type { Dimension } from '../quantity/quantity.js';
+import { shown } from '../quantity/shown-text.js';
+import { namePattern } from './name-pattern.js';
+import { found } from './plain-words.js';
 
 /** What procedures may speak of. It is handed in, since the step kinds and findings live in other rooms. */
 export interface Vocabulary {
   readonly stepKinds: readonly StepKindWord[];
   /** What each finding measures, or that it is a word. A name such as `share-of-*` stands for all that begin so. */
   readonly findings: Readonly<Record<string, Dimension | 'word'>>;
+  /** What a finding that is a word can be, where that is known beforehand; by its name, or its family's. */
+  readonly words: Readonly<Record<string, readonly string[]>>;
 }
 
 export interface StepKindWord {
@@ -15,13 +21,32 @@ export interface StepKindWord {
 
 /** What the finding measures, or undefined when there is none of that name; a whole family is none. */
 export function findingDimension(name: string, vocabulary: Vocabulary): Dimension | 'word' | undefined {
-  const { findings } = vocabulary;
-  if (name.endsWith('*')) return undefined;
-  if (Object.hasOwn(findings, name)) return findings[name];
-  const family = Object.keys(findings).find(
+  return name.endsWith('*') ? undefined : ofNameOrFamily(name, vocabulary.findings);
+}
+
+/**
+ * The word a finding is required to be, or what is wrong with it: it is none, or one that this finding can
+ * never be.
+ */
+export function readWord(
+  value: unknown,
+  finding: string,
+  { words }: Vocabulary,
+): { readonly word: string } | { readonly problem: string } {
+  if (typeof value !== 'string' || !namePattern.test(value))
+    return { problem: `${found(value)}; a word is needed` };
+  const known = ofNameOrFamily(finding, words);
+  if (known === undefined || known.includes(value)) return { word: value };
+  const hint = didYouMean(value, known) || `; it can be ${known.join(', ')}`;
+  return { problem: `${finding} is never ${shown(value)}${hint}` };
+}
+
+function ofNameOrFamily<Value>(name: string, all: Readonly<Record<string, Value>>): Value | undefined {
+  if (Object.hasOwn(all, name)) return all[name];
+  const family = Object.keys(all).find(
     (each) => each.endsWith('*') && name.length >= each.length && name.startsWith(each.slice(0, -1)),
   );
-  return family === undefined ? undefined : findings[family];
+  return family === undefined ? undefined : all[family];
 }
 
 /** The same, where a family such as `share-of-*` may be meant as a whole. */

@@ -72,3 +72,12 @@ export class RunningMoments {
     if (this.#count === 0) throw new UnfitDataError('RunningMoments', 'there are no values');
   }
 }
+
+/** Those that are kept for a name, begun where there are none yet. */
+export function momentsAt(moments: Map<string, RunningMoments>, name: string): RunningMoments {
+  const known = moments.get(name);
+  if (known !== undefined) return known;
+  const fresh = new RunningMoments();
+  moments.set(name, fresh);
+  return fresh;
+}

@@ -4,7 +4,7 @@ import { moduleVoltage } from '../bench/module-voltage.js';
 import type { SampleWanted, Taken } from '../bench/sample.js';
 import type { Amperes, Celsius, Seconds, Volts } from '../quantity/quantity.js';
 import type { Phase, PointOutcome, SetPoint } from '../record/journal-event.js';
-import { RunningMoments } from '../statistics/running-moments.js';
+import { momentsAt, RunningMoments } from '../statistics/running-moments.js';
 import { flows, isGone } from './holding.js';
 import { openCircuitVoltage } from './known-voltage.js';
 import type { StepContext } from './step-kind.js';
@@ -179,14 +179,6 @@ export class Points {
     });
     return 'let-go';
   }
-}
-
-function momentsAt(taps: Map<string, RunningMoments>, at: string): RunningMoments {
-  const known = taps.get(at);
-  if (known !== undefined) return known;
-  const fresh = new RunningMoments();
-  taps.set(at, fresh);
-  return fresh;
 }
 
 function tapsIn(taken: readonly Taken[]): ReadonlyMap<string, Volts> {

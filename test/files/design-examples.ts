@@ -97,6 +97,7 @@ findings:
 
 /** A vocabulary of our own with the shape of the real one, which lives in other rooms. */
 export const vocabulary: Vocabulary = {
+  words: { 'limit-style': ['constant-current', 'foldback', 'hiccup'] },
   stepKinds: [
     {
       kind: 'open-circuit',

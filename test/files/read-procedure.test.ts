@@ -227,6 +227,11 @@ describe('one mistake is one line, at its place', () => {
     ],
     [
       criterion,
+      'finding: limit-style, is: hickup',
+      "10:33: criteria.0.is: limit-style is never 'hickup'; did you mean 'hiccup'?",
+    ],
+    [
+      criterion,
       'finding: usable-current, atleast: 4 A',
       "10:32: criteria.0: unknown key 'atleast'; did you mean 'at-least'?",
     ],

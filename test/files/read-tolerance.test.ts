@@ -73,6 +73,10 @@ describe('one mistake is one line, at its place', () => {
     ],
     ['{ finding: limit-style, same: false }', "5:35: findings.0.same: found false; 'true' is needed"],
     [
+      '{ finding: limit-style, becomes: foldbak }',
+      "5:38: findings.0.becomes: limit-style is never 'foldbak'; did you mean 'foldback'?",
+    ],
+    [
       '{ finding: limit-style, becomes: 4 }',
       '5:38: findings.0.becomes: found the number 4; a word is needed',
     ],
