@@ -5,6 +5,8 @@ export default defineConfig({
     include: ['test/**/*.test.ts'],
     globalSetup: ['test/build-first.ts'],
     pool: 'forks',
+    // Much of the time goes into waiting at real sockets and ptys: a worker for each core, none left out.
+    maxWorkers: '100%',
     restoreMocks: true,
     unstubEnvs: true,
     testTimeout: 20_000,
