@@ -2,7 +2,7 @@ import type { Ratio } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import type { Finding } from './finding.js';
 import { amps } from './in-words.js';
-import type { GroupLook } from './module-currents.js';
+import { expandedCurrent, type GroupLook } from './module-currents.js';
 import type { Saturated } from './saturation.js';
 import { carriedAt, type Carried } from './shares.js';
 
@@ -29,15 +29,23 @@ const clearlyHarder = 1.1;
  * where the looks show it; else it is said to be likely, or not at all. Where the current stays under
  * overload nobody leaves: then all are at their limits, and the group holds the sum of them.
  */
-export function howItFailed({ modules }: RunHeader, seen: GroupSeen): string {
+export function howItFailed(header: RunHeader, seen: GroupSeen): string {
   const { held, saturated, dropout, style } = seen;
   const first = saturated === undefined ? '' : firstInWords(saturated, dropout === undefined);
   if (dropout === undefined) return first;
   const last = held.findLast(({ total }) => total <= Number(dropout.value)) ?? held.at(-1);
   if (last === undefined) return first;
-  const labels = new Map(modules.map(({ name, rated }) => [name, rated.current]));
+  if (!isTold(header, last)) return first;
+  const labels = new Map(header.modules.map(({ name, rated }) => [name, rated.current]));
   const failure = failureInWords(last, { value: Number(dropout.value), style, labels });
   return [first === '' ? failure : first, ...notBack(seen)].join('; ');
+}
+
+/** Each module's current is known to less than what would make one that carries nothing pass for a hog. */
+function isTold(header: RunHeader, look: GroupLook): boolean {
+  return look.currents.every(
+    (_, index) => expandedCurrent(header, look, index) < (1 - nearlyAll) * look.total,
+  );
 }
 
 function firstInWords({ module, how, current, total }: Saturated, holds: boolean): string {

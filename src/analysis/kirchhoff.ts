@@ -1,12 +1,13 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Amperes } from '../quantity/quantity.js';
+import type { Amperes, Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { combine, expandedFor } from '../statistics/uncertainty-budget.js';
 import { ballastsByRegression } from './ballasts-by-regression.js';
 import type { Finding } from './finding.js';
 import { amps } from './in-words.js';
-import { budgetOf, type GroupLook } from './module-currents.js';
+import { budgetOf, type GroupLook, meterOf } from './module-currents.js';
 import { isComplete } from './place-looks.js';
+import { promisedErrors } from './promised-errors.js';
 
 /** Whether the modules' currents add up to the load's, and if not, what is known of why. */
 export type Kirchhoff =
@@ -142,9 +143,15 @@ function plainlyWrong(header: RunHeader, looks: readonly GroupLook[]): string | 
       const stays = formatQuantity(first, 'voltage', { significant: 2 });
       return `what is read at the ballast of ${name} stays at ${stays} whatever the load takes: a meter in another mode, a stuck channel, or probes elsewhere`;
     }
-    if (Math.min(...volts) < -alike * largest && Math.max(...volts) < alike * largest) {
+    const zero = atZero(header, index + 1);
+    if (Math.min(...volts) < -Math.max(alike * largest, zero) && Math.max(...volts) < alike * largest) {
       return `the ballast of ${name} reads below zero: its probes are reversed`;
     }
   }
   return undefined;
+}
+
+/** What the meter of a place may show where there is nothing: the half-width of what was promised. */
+function atZero(header: RunHeader, place: number): Volts {
+  return Math.sqrt(3) * promisedErrors(header, meterOf(header, place), 'voltage').offset;
 }

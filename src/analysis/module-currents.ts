@@ -2,7 +2,7 @@ import type { Amperes, Ohms, Ratio, Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import type { UncertainPart } from '../statistics/effective-freedom.js';
 import { mean } from '../statistics/checked.js';
-import { type Contribution, rectangular } from '../statistics/uncertainty-budget.js';
+import { combine, type Contribution, rectangular } from '../statistics/uncertainty-budget.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence } from './evidence.js';
 import { believedStep, type PlaceLook, placeLooks, type PlaceRead } from './place-looks.js';
@@ -165,6 +165,12 @@ export function budgetOf(
     ...(drift === 0 ? [] : [promised('drift between the passes', drift)]),
     ...(load === 0 ? [] : loadBudget(header, total, load)),
   ];
+}
+
+/** How far off the current of one module may be, 95 %; by its place among the look's currents. */
+export function expandedCurrent(header: RunHeader, look: GroupLook, index: number): Amperes {
+  const alone = look.currents.map((_, other) => (other === index ? 1 : 0));
+  return combine(budgetOf(header, look, { modules: alone })).expanded;
 }
 
 function loadBudget(header: RunHeader, total: Amperes, weight: number): readonly Contribution[] {

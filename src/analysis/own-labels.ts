@@ -1,9 +1,8 @@
 import type { Amperes, Ratio } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
-import { combine } from '../statistics/uncertainty-budget.js';
 import { type Cap } from './derating.js';
 import { amps, ratedAmperes } from './in-words.js';
-import { budgetOf, type GroupLook } from './module-currents.js';
+import { expandedCurrent, type GroupLook } from './module-currents.js';
 
 /** What a group's recommendation must mind: no module carries more than its own label says, however they share. */
 export type OwnLabels = (current: Amperes) => Cap | undefined;
@@ -50,10 +49,10 @@ export function smallestLabel({ modules }: RunHeader): OwnLabels {
         };
 }
 
+/** No current flows back into a module, so none carries more than the whole, however little is known of it. */
 function upperEnd(header: RunHeader, look: GroupLook, index: number): Amperes {
-  const alone = look.currents.map((_, other) => (other === index ? 1 : 0));
-  const { expanded } = combine(budgetOf(header, look, { modules: alone }));
-  return (look.currents[index]?.current ?? 0) + expanded;
+  const { current = 0 } = look.currents[index] ?? {};
+  return Math.min(look.total, current + expandedCurrent(header, look, index));
 }
 
 /** The group's current at which a module first reaches its label, in proportion beyond the last point. */

@@ -7,9 +7,12 @@ import { promised } from './promised-errors.js';
  * `recovery-time`: the slowest of the recoveries after an overload, from the load's going off to the
  * voltage's being back; between the last look without it and the first with it. How long the next one
  * takes differs by the spread of those seen: a module that tries again each period may have been unloaded
- * just before it tries, or just after.
+ * just before it tries, or just after. Of a module that stayed away it is at least as long as it was waited
+ * for, so that it can fail a criterion and never pass one.
  */
 export function recoveryFindings(evidence: Evidence): readonly Finding[] {
+  const away = stayedAway(evidence);
+  if (away !== undefined) return [away];
   const recoveries = evidence.steps.flatMap((step) =>
     step.recoveries
       .filter((recovery) => recovery.outcome === 'came-back')
@@ -32,6 +35,22 @@ export function recoveryFindings(evidence: Evidence): readonly Finding[] {
       { step: slowest.step, note: noteOf(slowest, recoveries.length) },
     ),
   ];
+}
+
+/** The longest wait for a voltage that did not come back by itself. */
+function stayedAway({ steps }: Evidence): Finding | undefined {
+  const [longest] = steps
+    .flatMap(({ step, recoveries }) =>
+      recoveries.flatMap(({ outcome, within }) => (outcome === 'stayed-off' ? [{ step, within }] : [])),
+    )
+    .sort((one, other) => other.within - one.within);
+  if (longest === undefined) return undefined;
+  const note = 'it stays off after an overload, until its input is cycled';
+  const finding = measured('recovery-time', 'time', longest.within, [promised('the wait', 0)], {
+    step: longest.step,
+    note,
+  });
+  return { ...finding, bound: 'least' };
 }
 
 /** Evenly anywhere between the quickest and the slowest: too few are seen for the scatter to be an estimate. */

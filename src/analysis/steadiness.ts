@@ -18,6 +18,8 @@ export interface Edge {
 const unsteadyRatio = 3;
 /** With two or three readings at a point chance does it more often, and then it takes more than the ratio. */
 const strictLevel = 1e-4;
+/** Where one point alone says so it must say it clearly: of so many points one scatters by chance. */
+const loneRatio = 6;
 /** What scatters more than this is not clearly steady: a swing may have begun that the meter half hides. */
 const steadyRatio = 2;
 
@@ -39,9 +41,12 @@ export function findEdge(points: readonly CurvePoint[], resolution: Volts): Edge
   );
   const usual = usualSpread(spreads, resolution);
   if (usual === undefined) return undefined;
-  const first = fewestOnTheWrongSide(spreads.map((spread) => isUnsteady(spread, usual)));
+  const unsteady = spreads.map((spread) => isUnsteady(spread, usual));
+  const first = fewestOnTheWrongSide(unsteady);
   const above = spreads[first];
   if (above === undefined) return undefined;
+  const alone = unsteady.slice(first).filter((is) => is).length === 1;
+  if (alone && above.deviation <= loneRatio * usual.deviation) return undefined;
   const below = spreads.slice(0, first);
   const calm = below.findLast((spread) => spread.deviation <= steadyRatio * usual.deviation) ?? below[0];
   return calm === undefined ? undefined : { steady: calm.current, unsteady: above.current };

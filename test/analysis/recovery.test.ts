@@ -26,8 +26,15 @@ describe('the recovery time', () => {
     expect(found?.value).toBeCloseTo(0.03, 12);
   });
 
-  it('is not there for a module that stayed off, or came back only when its input was cycled', () => {
-    expect(recoveryFindings(after(['stayed-off', 10, 10], ['came-back-after-cycling', 1, 1.1]))).toEqual([]);
+  it('of a module that stayed off is at least what it was waited for, however quick it was before', () => {
+    const [finding] = recoveryFindings(
+      after(['came-back', 0, 0.1], ['stayed-off', 10, 10.02], ['came-back-after-cycling', 1, 1.1]),
+    );
+    expect(finding).toMatchObject({ value: 10.02, bound: 'least' });
+    expect(finding?.note).toContain('until its input is cycled');
+  });
+
+  it('is not there where nothing was overloaded', () => {
     expect(recoveryFindings(after())).toEqual([]);
   });
 

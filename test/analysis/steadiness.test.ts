@@ -36,6 +36,7 @@ describe('the edge of steadiness', () => {
     ['one disturbed reading at no load and a swing above', [90, 1, 1, 1, 60, 80, 70, 60], [3, 4]],
     ['one disturbed reading at 1 A and a swing above', [1, 90, 1, 1, 60, 80, 70, 60], [3, 4]],
     ['a swing that one point happens to miss', [1, 1, 1, 1, 1, 60, 1.2, 80, 70, 60], [4, 5]],
+    ['one point at the highest current that scatters by chance', [1, 1.1, 0.9, 1, 1, 0.8, 1, 4.5], none],
     ['a swing at the highest current only', [1, 1, 1, 1, 1, 1, 1, 60], [6, 7]],
     ['a swing over most of the currents', [1, 1, 1, 60, 60, 70, 60, 80, 90, 60, 70, 60], [2, 3]],
     ['restlessness at light load only', [60, 60, 1, 1, 1, 1, 1, 1, 1, 1, 1, 1], none],

@@ -33,7 +33,7 @@ const joined = 0.001;
 
 async function told(
   procedure: string,
-  given: Pick<CircuitCase, 'circuit' | 'modules'>,
+  given: Pick<CircuitCase, 'circuit' | 'modules' | 'fineMeter'>,
 ): Promise<{ readonly text: string; readonly found: (name: string) => Finding | undefined }> {
   const { result, error } = await runCircuit(
     procedure,
@@ -48,6 +48,18 @@ async function told(
 }
 
 describe('two bricks that both read 12.34 V', () => {
+  it('whose joints are too small for the meter: nobody is called a hog, and one label is all that is allowed', async () => {
+    const { found, text } = await told('sharing', {
+      circuit: 'parallel',
+      modules: [twelve('K1', 12.344, hiccup(3.7), joined), twelve('K2', 12.336, hiccup(3.6), joined)],
+      fineMeter: false,
+    });
+    expect(found('hogging-module')?.value).toBe('undetermined');
+    expect(text).not.toMatch(/K[12] hogs|reversed/);
+    expect(found('recommended-current')?.value).toBeGreaterThan(2.5);
+    expect(found('recommended-current')?.value).toBeLessThanOrEqual(3.5);
+  });
+
   it('joined directly fail at about what one of them holds, near 4 A, and the report says which and why', async () => {
     const { found, text } = await told('sharing', {
       circuit: 'parallel',
