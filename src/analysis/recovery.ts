@@ -1,6 +1,6 @@
 import { type Contribution, rectangular } from '../statistics/uncertainty-budget.js';
 import type { Evidence } from './evidence.js';
-import { type Finding, measured } from './finding.js';
+import { type Finding, inWords, measured } from './finding.js';
 import { promised } from './promised-errors.js';
 
 /**
@@ -46,11 +46,8 @@ function stayedAway({ steps }: Evidence): Finding | undefined {
     .sort((one, other) => other.within - one.within);
   if (longest === undefined) return undefined;
   const note = 'it stays off after an overload, until its input is cycled';
-  const finding = measured('recovery-time', 'time', longest.within, [promised('the wait', 0)], {
-    step: longest.step,
-    note,
-  });
-  return { ...finding, bound: 'least' };
+  const untold = inWords('recovery-time', '', { step: longest.step, note });
+  return { ...untold, value: longest.within, dimension: 'time', bound: 'least' };
 }
 
 /** Evenly anywhere between the quickest and the slowest: too few are seen for the scatter to be an estimate. */
