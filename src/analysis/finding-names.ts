@@ -1,4 +1,5 @@
 import { earthRelations } from '../circuit/earth-relation.js';
+import { ofNameOrFamily } from '../quantity/name-family.js';
 import type { Dimension } from '../quantity/quantity.js';
 
 /** Every finding there can be, and what it measures. A name that ends in `*` stands for one per module. */
@@ -45,10 +46,5 @@ export const findingWords: Readonly<Record<string, readonly string[]>> = {
 
 /** What a finding of that name measures; undefined for a name that is none of ours. */
 export function dimensionOfFinding(name: string): Dimension | 'word' | undefined {
-  const names: Readonly<Record<string, Dimension | 'word'>> = findingNames;
-  if (Object.hasOwn(names, name)) return names[name];
-  const family = Object.keys(names).find(
-    (one) => one.endsWith('*') && name.length >= one.length && name.startsWith(one.slice(0, -1)),
-  );
-  return family === undefined ? undefined : names[family];
+  return ofNameOrFamily<Dimension | 'word'>(name, findingNames);
 }

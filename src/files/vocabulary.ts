@@ -1,4 +1,5 @@
 import type { z } from 'zod';
+import { ofNameOrFamily } from '../quantity/name-family.js';
 import { didYouMean } from '../quantity/nearest.js';
 import type { Dimension } from '../quantity/quantity.js';
 import { shown } from '../quantity/shown-text.js';
@@ -24,6 +25,15 @@ export function findingDimension(name: string, vocabulary: Vocabulary): Dimensio
   return name.endsWith('*') ? undefined : ofNameOrFamily(name, vocabulary.findings);
 }
 
+/** The same, where a family such as `share-of-*` may be meant as a whole. */
+export function familyOrFindingDimension(
+  name: string,
+  vocabulary: Vocabulary,
+): Dimension | 'word' | undefined {
+  const { findings } = vocabulary;
+  return Object.hasOwn(findings, name) ? findings[name] : findingDimension(name, vocabulary);
+}
+
 /**
  * The word a finding is required to be, or what is wrong with it: it is none, or one that this finding can
  * never be.
@@ -39,21 +49,4 @@ export function readWord(
   if (known === undefined || known.includes(value)) return { word: value };
   const hint = didYouMean(value, known) || `; it can be ${known.join(', ')}`;
   return { problem: `${finding} is never ${shown(value)}${hint}` };
-}
-
-function ofNameOrFamily<Value>(name: string, all: Readonly<Record<string, Value>>): Value | undefined {
-  if (Object.hasOwn(all, name)) return all[name];
-  const family = Object.keys(all).find(
-    (each) => each.endsWith('*') && name.length >= each.length && name.startsWith(each.slice(0, -1)),
-  );
-  return family === undefined ? undefined : all[family];
-}
-
-/** The same, where a family such as `share-of-*` may be meant as a whole. */
-export function familyOrFindingDimension(
-  name: string,
-  vocabulary: Vocabulary,
-): Dimension | 'word' | undefined {
-  const { findings } = vocabulary;
-  return Object.hasOwn(findings, name) ? findings[name] : findingDimension(name, vocabulary);
 }
