@@ -26,7 +26,8 @@ export interface LinkPoint {
 
 /**
  * Where modules in series and a load come to rest: Σ (V_k(I) − R_k·I) is what the load needs to pass I. Where
- * there are several such points (a folding-back module among the links), the one of the highest voltage.
+ * there are several such points (a folding-back module among the links), the one of the highest voltage. Of
+ * several that would fold back at the very same current the lowest does: which of them is not Kirchhoff's to say.
  *
  * Volts, amperes, ohms. A link without an end to its fall (a vertical limit, no diode) is driven below 0 V as
  * far as the others and the load will have it; several such at once share that equally. A link that is open
