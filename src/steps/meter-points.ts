@@ -6,6 +6,7 @@ import type { OhmReadings } from '../circuit/ohm-readings.js';
 import type { Seconds, Volts } from '../quantity/quantity.js';
 import type { Phase } from '../record/journal-event.js';
 import { RunningMoments } from '../statistics/running-moments.js';
+import { asRead } from './as-read.js';
 import type { StepContext } from './step-kind.js';
 
 type Meter = NonNullable<OpenBench['meter']>;
@@ -109,14 +110,10 @@ export class MeterPoints {
     signal.throwIfAborted();
     const at = bench.places.movedAt;
     const where = at === undefined ? {} : { at };
-    const measurement = await this.#meter.read(what);
-    const read =
-      measurement.kind === 'value'
-        ? { value: measurement.value }
-        : { value: null, problem: measurement.kind };
-    journal.append({ event: 'reading', step, point, sample, of: 'meter', what, ...where, ...read });
-    guard([{ of: 'meter', what, ...where, measurement }], limits);
-    const value = numberIn(measurement);
+    const taken: Taken = { of: 'meter', what, ...where, measurement: await this.#meter.read(what) };
+    journal.append({ event: 'reading', step, point, sample, ...asRead(taken) });
+    guard([taken], limits);
+    const value = numberIn(taken.measurement);
     if (what === 'voltage') show({ voltage: value });
     return value;
   }

@@ -6,16 +6,18 @@ import { handTime } from './ask-to-do.js';
 import { longestDwell } from './dwell.js';
 import { holds } from './holding.js';
 import { openCircuitVoltage } from './known-voltage.js';
-import type { Pass } from './place-passes.js';
-import type { Points } from './point.js';
+import { type Pass, passThrough } from './place-passes.js';
+import { Points } from './point.js';
 import { comeBack } from './recover.js';
 import { ModuleStaysOffError } from './step-error.js';
-import { startUp } from './prove-places.js';
+import { provePlaces, startUp } from './prove-places.js';
 import type { Reach, StepContext } from './step-kind.js';
 
 const readingTime: Seconds = 0.1;
 /** The load's voltage and current, besides the places. */
 const usuallyRead = 2;
+/** Set-points are reckoned, and the same one must be found again. */
+const rounding: Ratio = 1e-9;
 /** How long what did not hold a point may take to come back. */
 const patience: Seconds = 10;
 
@@ -65,13 +67,38 @@ export interface Climb {
   readonly hold?: { readonly for: Seconds; readonly every: Seconds };
 }
 
+/** A climb through all passes, and the proof before each where it is asked for. */
+export interface ClimbWanted extends Omit<Climb, 'below'> {
+  readonly prove: boolean;
+  /** In a group, what the proof is made with. */
+  readonly proving: Amperes;
+  /** Whether the point that was not held is taken on the later passes too, or they end below it. */
+  readonly again: boolean;
+}
+
+/**
+ * Climbs as far on each pass as the passes before it have seen the whole hold. A pass after the first
+ * set-point was dropped would show nothing.
+ */
+export async function climbThrough(context: StepContext, wanted: ClimbWanted): Promise<void> {
+  const points = new Points(context);
+  let reached = Number.POSITIVE_INFINITY;
+  await passThrough(context, async (pass) => {
+    if (wanted.prove) await provePlaces(context, points, pass, { ...wanted, current: wanted.proving });
+    const below = wanted.again ? reached * (1 + rounding) : reached;
+    const { dropped } = await climb(context, points, pass, { ...wanted, below });
+    reached = Math.min(reached, dropped ?? Number.POSITIVE_INFINITY);
+    return reached > wanted.from ? 'go-on' : 'enough';
+  });
+}
+
 /**
  * Climbs through the same set-points on each pass, every place that the pass reaches read at each, and holds
  * the last one where it is told to. Where the whole no longer holds, be it on the way or while it is held, the
  * load goes off, the voltage must come back, and the first set-point is taken once more: a module that has
  * latched off while others go on shows there.
  */
-export async function climb(
+async function climb(
   context: StepContext,
   points: Points,
   { taps, of }: Pass,

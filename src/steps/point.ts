@@ -5,6 +5,7 @@ import type { SampleWanted, Taken } from '../bench/sample.js';
 import type { Amperes, Celsius, Seconds, Volts } from '../quantity/quantity.js';
 import type { Phase, PointOutcome, SetPoint } from '../record/journal-event.js';
 import { momentsAt, RunningMoments } from '../statistics/running-moments.js';
+import { asRead } from './as-read.js';
 import { flows, isGone } from './holding.js';
 import { openCircuitVoltage } from './known-voltage.js';
 import type { StepContext } from './step-kind.js';
@@ -141,13 +142,8 @@ export class Points {
   async #sample(point: number, sample: number, { set, wanted }: PointPlan): Promise<Seen> {
     const { bench, journal, clock, signal, limits, step, show } = this.#context;
     signal.throwIfAborted();
-    const taken = await bench.sample(({ of, what, at, measurement }) => {
-      const read =
-        measurement.kind === 'value'
-          ? { value: measurement.value }
-          : { value: null, problem: measurement.kind };
-      const where = at === undefined ? {} : { at };
-      journal.append({ event: 'reading', step, point, sample, of, what, ...where, ...read });
+    const taken = await bench.sample((one) => {
+      journal.append({ event: 'reading', step, point, sample, ...asRead(one) });
     }, wanted);
     guard(taken, limits);
     const seen = {

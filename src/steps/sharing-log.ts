@@ -1,13 +1,10 @@
 import { z } from 'zod';
 import { quantity, quantityOrShare } from '../files/building-blocks.js';
 import { formatQuantity, formatShare } from '../quantity/format-quantity.js';
-import type { Amperes, Seconds } from '../quantity/quantity.js';
+import type { Seconds } from '../quantity/quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
 import { defineStep } from './define-step.js';
-import { climb, climbDuration, climbParameters } from './place-climb.js';
-import { passThrough } from './place-passes.js';
-import { Points } from './point.js';
-import { provePlaces } from './prove-places.js';
+import { climbDuration, climbParameters, climbThrough } from './place-climb.js';
 
 const day: Seconds = 24 * 3600;
 /** Nothing is read between two looks, so nothing guards the group meanwhile. */
@@ -49,25 +46,16 @@ export const sharingLog = defineStep({
     `${points} points from ${formatShare(from, 'current')} to ${formatShare(to, 'current')}, each module's current at each` +
     (hold > 0 ? `, held for ${formatQuantity(hold, 'time')}` : ''),
   duration: (given, reach) => climbDuration(given, reach) + reach.passes * given.hold,
-  async perform(given, context) {
+  perform(given, context) {
     const { modules } = context.underTest;
-    const proving: Amperes = provingShare * Math.min(...modules.map(({ rated }) => rated.current));
-    const points = new Points(context);
-    const from = resolve(given.from, context.known);
-    const to = resolve(given.to, context.known);
-    let reached = Number.POSITIVE_INFINITY;
-    await passThrough(context, async (pass) => {
-      if (given.prove) await provePlaces(context, points, pass, { ...given, current: proving });
-      const climbed = await climb(context, points, pass, {
-        ...given,
-        phase: 'share',
-        from,
-        to,
-        below: reached,
-        hold: { for: given.hold, every: given.every },
-      });
-      reached = Math.min(reached, climbed.dropped ?? Number.POSITIVE_INFINITY);
-      return reached > from ? 'go-on' : 'enough';
+    return climbThrough(context, {
+      ...given,
+      phase: 'share',
+      from: resolve(given.from, context.known),
+      to: resolve(given.to, context.known),
+      proving: provingShare * Math.min(...modules.map(({ rated }) => rated.current)),
+      again: false,
+      hold: { for: given.hold, every: given.every },
     });
   },
 });

@@ -4,12 +4,7 @@ import { formatShare } from '../quantity/format-quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
 import { defineStep } from './define-step.js';
 import { requireIsolation } from './isolation-proved.js';
-import { climb, climbDuration, climbParameters } from './place-climb.js';
-import { passThrough } from './place-passes.js';
-import { Points } from './point.js';
-import { provePlaces } from './prove-places.js';
-
-const rounding = 1e-9;
+import { climbDuration, climbParameters, climbThrough } from './place-climb.js';
 
 export const stackCheck = defineStep({
   kind: 'stack-check',
@@ -36,22 +31,15 @@ export const stackCheck = defineStep({
   duration: (given, reach) => climbDuration(given, reach),
   async perform(given, context) {
     requireIsolation(context);
-    const points = new Points(context);
-    const from = resolve(given.from, context.known);
-    const to = resolve(given.to, context.known);
-    let reached = Number.POSITIVE_INFINITY;
-    await passThrough(context, async (pass) => {
-      if (given.prove) await provePlaces(context, points, pass, { ...given, current: 0 });
-      const climbed = await climb(context, points, pass, {
-        ...given,
-        phase: 'stack',
-        from,
-        to,
-        // The point that was not held is looked at on every pass: whose voltage goes shows at its own place only.
-        below: reached * (1 + rounding),
-      });
-      reached = Math.min(reached, climbed.dropped ?? Number.POSITIVE_INFINITY);
-      return reached > from ? 'go-on' : 'enough';
+    await climbThrough(context, {
+      ...given,
+      phase: 'stack',
+      from: resolve(given.from, context.known),
+      to: resolve(given.to, context.known),
+      // The open voltages show it.
+      proving: 0,
+      // Whose voltage goes at the point that was not held shows at its own place only.
+      again: true,
     });
   },
 });
