@@ -109,7 +109,9 @@ export class EvidenceCollector {
         step?.points.push(this.#point);
         return;
       case 'point-ended':
-        if (this.#point) this.#point.outcome = event.outcome;
+        // Taken again; what was read before the connection was lost counts for nothing.
+        if (event.outcome === 'interrupted') step?.points.pop();
+        else if (this.#point) this.#point.outcome = event.outcome;
         this.#point = undefined;
         return;
       case 'recovery':
@@ -128,6 +130,7 @@ export class EvidenceCollector {
         this.#ended = event;
         return;
       case 'opened':
+      case 'resumed':
       case 'instrument':
       case 'caution':
       case 'prompt':

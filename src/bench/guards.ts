@@ -1,5 +1,5 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Celsius, Dimension, Volts } from '../quantity/quantity.js';
+import type { Amperes, Celsius, Dimension, Volts } from '../quantity/quantity.js';
 import { GuardTrippedError } from './bench-error.js';
 import { type Ceilings, overCurrentFactor } from './ceilings.js';
 import type { Taken } from './sample.js';
@@ -8,6 +8,29 @@ export interface GuardLimits extends Ceilings {
   /** The nameplate's; a voltage further below zero than a fiftieth of it is reversed polarity. */
   readonly ratedVoltage: Volts;
   readonly temperature?: Celsius | undefined;
+}
+
+/** What the load had been told when something was read: nothing where its input was off. */
+export interface Told {
+  readonly current?: Amperes;
+  readonly voltage?: Volts;
+}
+
+/** The guards of one run. Every sample passes them before anything is made of it. */
+export class Guards {
+  readonly #limits: GuardLimits;
+
+  constructor(limits: GuardLimits) {
+    this.#limits = limits;
+  }
+
+  /**
+   * Looks at everything that was read at one moment.
+   * @throws GuardTrippedError naming the guard, the reading and who set the limit.
+   */
+  look(taken: readonly Taken[], _told: Told): void {
+    guard(taken, this.#limits);
+  }
 }
 
 /**

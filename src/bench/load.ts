@@ -7,7 +7,10 @@ import { type Ceilings, overCurrentFactor } from './ceilings.js';
 
 export type InputState = 'on' | 'off';
 
-/** Told of each change of the input, after it was read back. */
+/**
+ * Told of each change of the input, after it was read back; and, unconfirmed, before it is switched on. What it
+ * throws then keeps the input off.
+ */
 export type InputListener = (state: InputState, confirmed: boolean) => void;
 
 /** An electronic load that keeps the bench's ceilings and reads its input's state back. */
@@ -77,9 +80,11 @@ export class Load {
 
   /** @throws DisobeyedError when the load says that its input is still off. */
   async inputOn(): Promise<void> {
+    // Told beforehand: whatever becomes of us in between, no record shall lack it.
+    this.#onInput('on', false);
     await this.instrument.perform('input-on');
     const confirmed = await this.isOn();
-    this.#onInput('on', confirmed);
+    this.#onInput(confirmed ? 'on' : 'off', true);
     if (!confirmed)
       throw new DisobeyedError(this.address, 'was told to switch its input on and says that it is off');
   }

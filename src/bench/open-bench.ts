@@ -18,6 +18,8 @@ export interface BenchParts {
   readonly clock: Clock;
   readonly onInput: InputListener;
   readonly onNotice: (text: string) => void;
+  /** Aborted when the run must stop: no connection that was lost is then waited for. */
+  readonly signal?: AbortSignal;
   /** `make-safe` tells the load what makes it safe before anything is asked of it. */
   readonly first?: InstrumentParts['first'];
 }
@@ -44,6 +46,10 @@ export interface OpenBench {
    * told before anything is asked. Hands over a load that answers.
    */
   reopenLoad(pause: Seconds): Promise<Load>;
+  /** How often a connection was lost, or an answer stayed away, and was found again: what is measured across it is no measurement. */
+  readonly gaps: number;
+  /** Gives up whatever is under way with the load, for whoever can't wait: its connection is closed. Never rejects. */
+  cut(): Promise<void>;
   /** Does something that no listener can stop: a journal on a full disk must not keep the load on. */
   regardless<T>(work: () => Promise<T>): Promise<T>;
   /** Sends each instrument its parting messages and closes all connections. Never rejects. */
@@ -141,6 +147,8 @@ function assemble(
       load = new Load(await openInstrument(parts, audience, 'load', 'make-safe'), ceilings, audience.input);
       return load;
     },
+    gaps: 0,
+    cut: () => load.instrument.close(),
     regardless,
     close: () =>
       regardless(async () => {

@@ -7,6 +7,7 @@ import type { Amperes, Dimension, Seconds, Volts } from '../quantity/quantity.js
  */
 export type JournalEvent =
   | Opened
+  | Resumed
   | InstrumentAnswered
   | CautionAcknowledged
   | StepBegan
@@ -31,6 +32,22 @@ export interface Opened {
   readonly wallClock: string;
   /** SHA-256 of run.json, so that what was planned can't be changed afterwards unnoticed either. */
   readonly header: string;
+}
+
+/**
+ * The run goes on where an earlier one was broken off. The events of the steps that were done then follow, as
+ * that record holds them with its times, up to the last of them; what comes after was measured in this run.
+ */
+export interface Resumed {
+  readonly event: 'resumed';
+  /** The name of the earlier record's folder. */
+  readonly run: string;
+  /** SHA-256 of the earlier run.json. */
+  readonly header: string;
+  /** ISO 8601, UTC: when the earlier run began. */
+  readonly began: string;
+  /** How many steps were done then. */
+  readonly steps: number;
 }
 
 export interface InstrumentAnswered {
@@ -119,13 +136,20 @@ export interface ReadingTaken {
 /** `held`: the module kept its voltage and the load its current; `dropped`: not so. */
 export type PointOutcome = 'held' | 'dropped' | 'measured';
 
+/** A connection was lost in the middle of the point: what it read counts for nothing, and it is taken again. */
+export type Interrupted = 'interrupted';
+
 export interface PointEnded {
   readonly event: 'point-ended';
   readonly step: number;
   readonly point: number;
-  readonly outcome: PointOutcome;
+  readonly outcome: PointOutcome | Interrupted;
 }
 
+/**
+ * Before the input is switched on this says `on`, unconfirmed, so that no record is without it; what the load
+ * says afterwards comes as another one.
+ */
 export interface InputChanged {
   readonly event: 'input';
   readonly state: 'on' | 'off';
@@ -173,6 +197,18 @@ export interface GuardTripped {
 export interface StepEnded {
   readonly event: 'step-ended';
   readonly step: number;
+  /** What later steps rest on; records made before a run could be resumed lack it. */
+  readonly carried?: Carried;
+}
+
+/** What the steps up to here found out, as far as later steps rest on it. */
+export interface Carried {
+  /** The nameplate and what was measured, by the names that procedures refer to. */
+  readonly known: Readonly<Record<string, number>>;
+  /** The highest current that was held, and the lowest that was not. */
+  readonly tried: { readonly held?: Amperes; readonly dropped?: Amperes };
+  /** How each module's output stands to earth, by its name. */
+  readonly earths: Readonly<Record<string, string>>;
 }
 
 export interface Ended {
@@ -183,13 +219,23 @@ export interface Ended {
   readonly status: number;
 }
 
-/** These are sealed, and flushed to the disk before the run goes on. */
-export const sealedEvents: ReadonlySet<JournalEvent['event']> = new Set([
+/** A reader believes none of these without its seal. */
+export const mustBeSealed: ReadonlySet<JournalEvent['event']> = new Set([
   'opened',
   'point-ended',
   'input',
   'guard-tripped',
   'ended',
+]);
+
+/**
+ * These are sealed, and flushed to the disk before the run goes on. In records of old the end of a step and
+ * what a run was resumed from bear no seal.
+ */
+export const sealedEvents: ReadonlySet<JournalEvent['event']> = new Set([
+  ...mustBeSealed,
+  'step-ended',
+  'resumed',
 ]);
 
 export type TimedEvent = JournalEvent & { readonly t: Seconds };

@@ -1,5 +1,5 @@
 import { dimensions } from '../quantity/quantity.js';
-import { type JournalEvent, journalFormat, phases, sealedEvents, type TimedEvent } from './journal-event.js';
+import { type JournalEvent, journalFormat, mustBeSealed, phases, type TimedEvent } from './journal-event.js';
 import { isSealed } from './seal.js';
 
 /**
@@ -14,7 +14,7 @@ export function parseLine(line: Buffer, first: boolean): TimedEvent | undefined 
   const { event: name, t } = fields;
   const shape = typeof name === 'string' ? shapes.get(name) : undefined;
   if (shape === undefined || !isNumber(t) || first !== (name === 'opened')) return undefined;
-  if (mustBeSealed.has(name) && !isSealed(line)) return undefined;
+  if (mustBeSealed.has(name as JournalEvent['event']) && !isSealed(line)) return undefined;
   for (const [field, fits] of shape) {
     if (!fits(fields[field])) return undefined;
   }
@@ -54,6 +54,17 @@ const isSetPoint: Fits = (value) => {
   return ifThere(isNumber)(current) && ifThere(isNumber)(voltage);
 };
 
+const isRecordOf =
+  (fits: Fits): Fits =>
+  (value) =>
+    typeof value === 'object' && value !== null && !Array.isArray(value) && Object.values(value).every(fits);
+
+const isCarried: Fits = (value) => {
+  if (typeof value !== 'object' || value === null) return false;
+  const { known, tried, earths } = value as Readonly<Record<string, unknown>>;
+  return isRecordOf(isNumber)(known) && isRecordOf(isNumber)(tried) && isRecordOf(isText)(earths);
+};
+
 /** For every event, every field but its name. */
 type Shapes = {
   readonly [Name in JournalEvent['event']]: Readonly<
@@ -63,6 +74,7 @@ type Shapes = {
 
 const shapeOf: Shapes = {
   opened: { format: isOneOf([journalFormat]), wallClock: isText, header: isText },
+  resumed: { run: isText, header: isText, began: isText, steps: isCount },
   instrument: { role: isText, address: isText, identity: isText },
   caution: { name: isText, by: isOneOf(['operator', '--yes', 'simulated-operator']) },
   'step-began': { step: isCount, kind: isText },
@@ -83,7 +95,11 @@ const shapeOf: Shapes = {
     value: orNull(isNumber),
     problem: ifThere(isOneOf(['overload', 'not-a-number'])),
   },
-  'point-ended': { step: isCount, point: isCount, outcome: isOneOf(['held', 'dropped', 'measured']) },
+  'point-ended': {
+    step: isCount,
+    point: isCount,
+    outcome: isOneOf(['held', 'dropped', 'measured', 'interrupted']),
+  },
   input: { state: isOneOf(['on', 'off']), confirmed: isFlag },
   recovery: {
     step: isCount,
@@ -101,12 +117,10 @@ const shapeOf: Shapes = {
   },
   notice: { text: isText },
   'guard-tripped': { guard: isText, text: isText },
-  'step-ended': { step: isCount },
+  'step-ended': { step: isCount, carried: ifThere(isCarried) },
   ended: { how: isOneOf(['completed', 'stopped', 'failed']), reason: orNull(isText), status: isNumber },
 };
 
 const shapes: ReadonlyMap<string, readonly (readonly [string, Fits])[]> = new Map(
   Object.entries(shapeOf).map(([name, fields]) => [name, Object.entries(fields)]),
 );
-
-const mustBeSealed: ReadonlySet<unknown> = sealedEvents;

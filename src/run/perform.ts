@@ -1,11 +1,12 @@
 import { GuardTrippedError } from '../bench/bench-error.js';
+import { Guards } from '../bench/guards.js';
 import { makeSafe, type Safety } from '../bench/make-safe.js';
 import type { OpenBench } from '../bench/open-bench.js';
 import { checkInputIsOff, checkMeters, checkOpenCircuitVoltage } from '../bench/pre-flight.js';
 import type { Clock } from '../clock/clock.js';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { JournalEvent } from '../record/journal-event.js';
+import type { Carried, JournalEvent } from '../record/journal-event.js';
 import type { Operator } from '../steps/operator.js';
 import type { Progress, StepContext, Tried } from '../steps/step-kind.js';
 import { cautionTexts } from './cautions.js';
@@ -144,6 +145,7 @@ async function goThrough(performance: Performance): Promise<void> {
     ratedVoltage: plan.underTest.rated.voltage,
     temperature: plan.bench.limits.temperature,
   };
+  const guards = new Guards(limits);
   let looked = false;
   for (const [index, planned] of plan.steps.entries()) {
     signal.throwIfAborted();
@@ -158,6 +160,7 @@ async function goThrough(performance: Performance): Promise<void> {
       step,
       bench,
       limits,
+      guards,
       underTest: plan.underTest,
       journal,
       clock,
@@ -170,8 +173,13 @@ async function goThrough(performance: Performance): Promise<void> {
         watch.progress(step, progress);
       },
     });
-    journal.append({ event: 'step-ended', step });
+    journal.append({ event: 'step-ended', step, carried: carriedBy({ known, tried, earths }) });
   }
+}
+
+/** What a run that goes on from here needs; a copy, as later steps go on writing. */
+function carriedBy({ known, tried, earths }: Pick<StepContext, 'known' | 'tried' | 'earths'>): Carried {
+  return { known: { ...known }, tried: { ...tried }, earths: Object.fromEntries(earths) };
 }
 
 /** Whoever aborts the signal wants an end, whatever reason they give; only an error of ours is a failure. */

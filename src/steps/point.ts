@@ -1,5 +1,5 @@
 import { LoadSwitchedOffError } from '../bench/bench-error.js';
-import { BlindSamples, guard, valueOf } from '../bench/guards.js';
+import { BlindSamples, valueOf } from '../bench/guards.js';
 import { moduleVoltage } from '../bench/module-voltage.js';
 import type { SampleWanted, Taken } from '../bench/sample.js';
 import type { Amperes, Celsius, Seconds, Volts } from '../quantity/quantity.js';
@@ -140,12 +140,12 @@ export class Points {
   }
 
   async #sample(point: number, sample: number, { set, wanted }: PointPlan): Promise<Seen> {
-    const { bench, journal, clock, signal, limits, step, show } = this.#context;
+    const { bench, journal, clock, signal, guards, step, show } = this.#context;
     signal.throwIfAborted();
     const taken = await bench.sample((one) => {
       journal.append({ event: 'reading', step, point, sample, ...asRead(one) });
     }, wanted);
-    guard(taken, limits);
+    guards.look(taken, set);
     const seen = {
       t: clock.now(),
       voltage: moduleVoltage(bench, taken),

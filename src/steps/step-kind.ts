@@ -1,6 +1,6 @@
 import type { z } from 'zod';
 import type { OpenBench } from '../bench/open-bench.js';
-import type { GuardLimits } from '../bench/guards.js';
+import type { GuardLimits, Guards } from '../bench/guards.js';
 import type { EarthRelation } from '../circuit/earth-relation.js';
 import type { Clock } from '../clock/clock.js';
 import type { Circuit } from '../files/procedure.js';
@@ -65,6 +65,8 @@ export interface StepContext {
   readonly step: number;
   readonly bench: OpenBench;
   readonly limits: GuardLimits;
+  /** Every sample passes them before anything is made of it. */
+  readonly guards: Guards;
   readonly underTest: UnderTest;
   readonly journal: { append(event: JournalEvent): void };
   readonly clock: Clock;

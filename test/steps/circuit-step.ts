@@ -1,3 +1,4 @@
+import { Guards } from '../../src/bench/guards.js';
 import { openBench } from '../../src/bench/open-bench.js';
 import type { Post } from '../../src/files/bench.js';
 import type { Module } from '../../src/files/module.js';
@@ -82,11 +83,13 @@ export async function circuitStep(
   const step = stepKinds.find((one) => one.kind === kind);
   if (step === undefined) throw new Error(`no step is called ${kind}`);
   const isolated = new Map(underTest.modules.map(({ name }) => [name, 'isolated'] as const));
+  const limits = { ...bench.ceilings, ratedVoltage: underTest.rated.voltage };
   const error: unknown = await step
     .perform(step.parameters.parse(parameters), {
       step: 1,
       bench,
-      limits: { ...bench.ceilings, ratedVoltage: underTest.rated.voltage },
+      limits,
+      guards: new Guards(limits),
       underTest,
       journal: { append },
       clock,

@@ -1,3 +1,4 @@
+import { Guards } from '../../src/bench/guards.js';
 import { type OpenBench, openBench } from '../../src/bench/open-bench.js';
 import type { Driver } from '../../src/files/driver.js';
 import type { Module } from '../../src/files/module.js';
@@ -146,10 +147,12 @@ export async function checkIsolation(script: IsolationScript = {}): Promise<Isol
   };
   const earths: StepContext['earths'] = new Map();
   const notes: string[] = [];
+  const limits = { ...bench.ceilings, ratedVoltage: 15 };
   const performed = isolationCheck.perform(isolationCheck.parameters.parse(script.parameters ?? {}), {
     step: 1,
     bench,
-    limits: { ...bench.ceilings, ratedVoltage: 15 },
+    limits,
+    guards: new Guards(limits),
     underTest: underTestOf(circuit, modules),
     journal: { append },
     clock,

@@ -1,4 +1,4 @@
-import type { GuardLimits } from '../../src/bench/guards.js';
+import { type GuardLimits, Guards } from '../../src/bench/guards.js';
 import type { OpenBench } from '../../src/bench/open-bench.js';
 import type { Module } from '../../src/files/module.js';
 import type { JournalEvent } from '../../src/record/journal-event.js';
@@ -86,6 +86,7 @@ export async function stage(change: StageChange = {}): Promise<Stage> {
         step: 1,
         bench,
         limits,
+        guards: new Guards(limits),
         underTest: { circuit: 'single', modules: [k1], name: 'K1', rated: k1.rated },
         journal: { append },
         clock: place.clock,
