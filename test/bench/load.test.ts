@@ -45,13 +45,14 @@ describe('the load of a bench', () => {
     expect(world.load).toMatchObject({ input: 'off', mode: 'current', protection: {} });
   });
 
-  it('tells of its input only once it was read back', async () => {
+  it('tells of its input before it goes on, and of either once it was read back', async () => {
     const { load, world, told } = await opened();
     await load.inputOn();
     expect(world.load.input).toBe('on');
     await load.inputOff();
     expect(world.load.input).toBe('off');
     expect(told).toEqual([
+      ['on', false],
       ['on', true],
       ['off', true],
     ]);
@@ -121,7 +122,10 @@ describe('the load of a bench', () => {
       exitCode: 69,
       message: 'the load at simulated:standard-load was told to switch its input on and says that it is off',
     });
-    expect(told).toEqual([['on', false]]);
+    expect(told).toEqual([
+      ['on', false],
+      ['off', true],
+    ]);
   });
 
   it('that says it is on when it was told to be off stops the run', async () => {
@@ -132,6 +136,7 @@ describe('the load of a bench', () => {
       message: 'the load at simulated:standard-load was told to switch its input off and says that it is on',
     });
     expect(told).toEqual([
+      ['on', false],
       ['on', true],
       ['off', false],
     ]);

@@ -73,7 +73,7 @@ describe('the search for the dropout', () => {
     const story = bench.events
       .filter(({ event }) => ['point-ended', 'input', 'recovery'].includes(event))
       .map((event) => {
-        if (event.event === 'input') return `input ${event.state}`;
+        if (event.event === 'input') return `input ${event.state}${event.confirmed ? '' : ' told'}`;
         if (event.event === 'recovery') return event.outcome;
         const point = 'point' in event ? event.point : 0;
         const began = bench.the('point-began').find((one) => one.point === point);
@@ -84,10 +84,11 @@ describe('the search for the dropout', () => {
     expect(dropouts.length).toBeGreaterThan(0);
     for (const index of dropouts) {
       const after = story.slice(index + 1).filter((entry) => !entry.startsWith('overload'));
-      expect(after.slice(0, 5)).toEqual([
+      expect(after.slice(0, 6)).toEqual([
         'input off',
         'recovery held',
         'came-back',
+        'input on told',
         'input on',
         'return held',
       ]);

@@ -83,7 +83,7 @@ describe('the trace of a limit', () => {
   it('lets the module rest between two points, and steps down without a pause where none is asked for', async () => {
     const resting = await searched({ ...exact, file: 'nursery-constant-current' });
     await resting.perform('limit-trace', { from: '14.9 V', to: '14.8 V', points: 3, watch: '0 s' });
-    expect(resting.the('input').map(({ state }) => state)).toEqual([
+    expect(resting.the('input').flatMap(({ state, confirmed }) => (confirmed ? [state] : []))).toEqual([
       'off',
       ...['on', 'off', 'on', 'off', 'on', 'off'],
       'off',
@@ -96,7 +96,11 @@ describe('the trace of a limit', () => {
       watch: '0 s',
       rest: '0 s',
     });
-    expect(hurrying.the('input').map(({ state }) => state)).toEqual(['off', 'on', 'off']);
+    expect(hurrying.the('input').flatMap(({ state, confirmed }) => (confirmed ? [state] : []))).toEqual([
+      'off',
+      'on',
+      'off',
+    ]);
   });
 
   it('changes the mode, and the voltage from whatever it was, only with the input off', async () => {

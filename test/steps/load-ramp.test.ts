@@ -30,7 +30,11 @@ describe('the load ramp', () => {
       ['down', 2],
       ['down', 0],
     ]);
-    expect(the('input').map(({ state }) => state)).toEqual(['on', 'off']);
+    expect(the('input').map(({ state, confirmed }) => [state, confirmed])).toEqual([
+      ['on', false],
+      ['on', true],
+      ['off', true],
+    ]);
     expect(simulation.world.load).toMatchObject({ input: 'off', setCurrent: 0 });
   });
 
@@ -64,7 +68,11 @@ describe('the load ramp', () => {
       ]);
       // The dropout is not prolonged: one sample was enough.
       expect(the('reading').filter(({ point }) => point === 4)).toHaveLength(3);
-      expect(the('input').map(({ state }) => state)).toEqual(['on', 'off']);
+      expect(the('input').map(({ state, confirmed }) => [state, confirmed])).toEqual([
+        ['on', false],
+        ['on', true],
+        ['off', true],
+      ]);
       expect(simulation.world.load).toMatchObject({ input: 'off', setCurrent: 0 });
     },
   );

@@ -34,7 +34,11 @@ describe('the open-circuit step', () => {
     await bench.load.inputOn();
     await perform('open-circuit', { for: '1 s' });
     expect(simulation.world.load.input).toBe('off');
-    expect(the('input').map(({ state }) => state)).toEqual(['on', 'off']);
+    expect(the('input').map(({ state, confirmed }) => [state, confirmed])).toEqual([
+      ['on', false],
+      ['on', true],
+      ['off', true],
+    ]);
   });
 
   it('stops the run where the meter gives no value three times in a row, each of them in the record', async () => {

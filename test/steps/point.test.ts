@@ -20,6 +20,7 @@ describe('a point', () => {
       { event: 'point-ended', step: 1, point: number, outcome: 'held' },
     ];
     expect(events).toMatchObject([
+      { event: 'input', state: 'on', confirmed: false },
       { event: 'input', state: 'on', confirmed: true },
       ...point(1, 1),
       ...point(2, 2),

@@ -22,7 +22,12 @@ describe('a soak', () => {
     expect(there.the('notice').map(({ text }) => text)).toEqual([
       expect.stringMatching(/^settled after 5\d\.\d min$/) as string,
     ]);
-    expect(there.the('input').map(({ state }) => state)).toEqual(['off', 'on', 'off']);
+    expect(there.the('input').map(({ state, confirmed }) => [state, confirmed])).toEqual([
+      ['off', true],
+      ['on', false],
+      ['on', true],
+      ['off', true],
+    ]);
     expect(there.simulation.world.load).toMatchObject({ input: 'off', setCurrent: 0 });
     expect(there.tried).toEqual({ held: 4 });
   });
