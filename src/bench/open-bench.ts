@@ -5,6 +5,7 @@ import { Instrument, type InstrumentParts } from '../instrument/instrument.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { Audience } from './audience.js';
 import { type Ceilings, ceilingsOf } from './ceilings.js';
+import { Connections } from './connections.js';
 import { sayWhatIsOn } from './found-on.js';
 import { type InputListener, Load } from './load.js';
 import { checkAgainstLoad } from './meter-against-load.js';
@@ -16,6 +17,8 @@ export interface BenchParts {
   readonly drivers: BenchDrivers;
   readonly connect: Connect;
   readonly clock: Clock;
+  /** Of the run, where there is one; without them what the bench and its instruments allow. */
+  readonly ceilings?: Ceilings;
   readonly onInput: InputListener;
   readonly onNotice: (text: string) => void;
   /** Aborted when the run must stop: no connection that was lost is then waited for. */
@@ -48,7 +51,10 @@ export interface OpenBench {
   reopenLoad(pause: Seconds): Promise<Load>;
   /** How often a connection was lost, or an answer stayed away, and was found again: what is measured across it is no measurement. */
   readonly gaps: number;
-  /** Gives up whatever is under way with the load, for whoever can't wait: its connection is closed. Never rejects. */
+  /**
+   * Gives up whatever is under way with any instrument, for whoever can't wait: all connections are closed, and
+   * a question without an answer ends. The load can be opened afresh. Never rejects.
+   */
   cut(): Promise<void>;
   /** Does something that no listener can stop: a journal on a full disk must not keep the load on. */
   regardless<T>(work: () => Promise<T>): Promise<T>;
@@ -67,7 +73,9 @@ export interface BenchInstrument {
  * Nothing is switched on. Posts for which no driver is given are left alone.
  * @throws FoundOnError when another instrument fails and the load is on, though nobody here switched it on
  */
-export async function openBench(parts: BenchParts): Promise<OpenBench> {
+export async function openBench(wanted: BenchParts): Promise<OpenBench> {
+  const connections = new Connections(wanted.connect);
+  const parts = { ...wanted, connect: connections.connect };
   const audience = new Audience(parts.onInput, parts.onNotice);
   const load = await openInstrument(parts, audience, 'load', parts.first);
   const others: BenchInstrument[] = [];
@@ -76,7 +84,7 @@ export async function openBench(parts: BenchParts): Promise<OpenBench> {
       if (post === 'load' || driverAt(parts.drivers, post) === undefined) continue;
       others.push({ post, instrument: await openInstrument(parts, audience, post) });
     }
-    return assemble(parts, audience, load, others);
+    return assemble(parts, audience, connections, load, others);
   } catch (error) {
     const told = await sayWhatIsOn(load, error);
     for (const { instrument } of others) await instrument.close();
@@ -88,10 +96,11 @@ export async function openBench(parts: BenchParts): Promise<OpenBench> {
 function assemble(
   parts: BenchParts,
   audience: Audience,
+  connections: Connections,
   first: Instrument,
   others: readonly BenchInstrument[],
 ): OpenBench {
-  const ceilings = ceilingsOf(parts.bench, parts.drivers);
+  const ceilings = parts.ceilings ?? ceilingsOf(parts.bench, parts.drivers);
   let load = new Load(first, ceilings, audience.input);
   const at = (post: Post): Instrument | undefined => others.find((one) => one.post === post)?.instrument;
   const meter = at('meter');
@@ -148,7 +157,7 @@ function assemble(
       return load;
     },
     gaps: 0,
-    cut: () => load.instrument.close(),
+    cut: () => connections.giveUp(),
     regardless,
     close: () =>
       regardless(async () => {

@@ -35,6 +35,8 @@ export async function performPlan(
     readonly runs: string;
     readonly operator: Operator;
     readonly signal: AbortSignal;
+    /** Aborted by whoever will not wait for an answer: the connections are given up, the load told afresh. */
+    readonly hurry: AbortSignal;
     readonly watch: RunWatcher;
   },
 ): Promise<PlanPerformed> {
@@ -46,6 +48,7 @@ export async function performPlan(
   const bench = await openBench({
     bench: plan.bench,
     drivers: plan.drivers,
+    ceilings: plan.ceilings,
     connect: world.connect,
     clock: world.clock,
     onInput: (state, confirmed) => {
@@ -55,6 +58,7 @@ export async function performPlan(
       append({ event: 'notice', text });
     },
   });
+  options.hurry.addEventListener('abort', () => void bench.cut(), { once: true });
   try {
     const { folder, journal } = await beginRecord(loaded, world, bench, options.runs);
     try {

@@ -13,7 +13,7 @@ import { planAsJson, planAsText } from './plan-shown.js';
 import { ProgressLine } from './progress-line.js';
 import { shown } from './shown.js';
 import { simulatedOperator } from './simulated-operator.js';
-import { stopOnSignals } from './stop-signals.js';
+import { stopOnSignals, type StopWishes } from './stop-signals.js';
 import type { Streams } from './streams.js';
 import { type World, worldOf } from './wiring.js';
 
@@ -43,15 +43,16 @@ export async function run(wanted: RunWanted, streams: Streams): Promise<ExitCode
     return exitCodes.conforms;
   }
   const world = await worldOf(loaded.plan.bench, loaded.plan.drivers);
-  const operator = operatorFor(world, wanted.yes === true, streams);
-  requireOperator(loaded.plan, operator, wanted.yes === true);
   const stop = stopOnSignals(streams);
+  const operator = operatorFor(world, wanted.yes === true, streams, stop);
   const watch = new ProgressLine(streams.stderr, loaded.plan, world.clock);
   try {
+    requireOperator(loaded.plan, operator, wanted.yes === true);
     const performed = await performPlan(loaded, world, {
       runs: wanted.runs,
       operator,
       signal: stop.signal,
+      hurry: stop.hurry,
       watch,
     });
     watch.clear();
@@ -81,9 +82,14 @@ function tell(performed: PlanPerformed, json: boolean, streams: Streams): ExitCo
     : exitCodeOf(understood.error);
 }
 
-function operatorFor(world: World, yes: boolean, streams: Streams): Operator {
+function operatorFor(world: World, yes: boolean, streams: Streams, stop: StopWishes): Operator {
   return world.simulation === undefined
-    ? new TerminalOperator({ input: streams.stdin, output: streams.stderr, yes })
+    ? new TerminalOperator({
+        input: streams.stdin,
+        output: streams.stderr,
+        yes,
+        interrupted: stop.wish,
+      })
     : simulatedOperator(world.simulation);
 }
 

@@ -1,3 +1,5 @@
+import { realClock } from '../clock/real-clock.js';
+import type { Seconds } from '../quantity/quantity.js';
 import { StoppedByOperator, UnforeseenError } from '../run/stopped.js';
 import type { Streams } from './streams.js';
 
@@ -9,34 +11,64 @@ const reasons = {
 } as const;
 
 /**
- * Turns the wish to end the program, and anything that breaks outside a step, into a run that ends safely:
- * the step is left, the bench is made safe, the record is closed. Asking again changes nothing, as that is
- * already the quickest safe way out.
+ * One wish may come twice: what starts programs passes on a Ctrl-C that the terminal has sent already, and a
+ * terminal that is closed says so more than once. Nobody repeats a wish as fast as that.
  */
-export function stopOnSignals(streams: Streams): { readonly signal: AbortSignal; release(): void } {
-  const controller = new AbortController();
-  const handlers = Object.entries(reasons).map(([name, reason]) => {
-    const handler = (): void => {
-      const words = controller.signal.aborted
-        ? 'the bench is being made safe, one moment'
-        : `${reason}; making the bench safe`;
-      streams.stderr.write(`\n${words}\n`);
-      controller.abort(new StoppedByOperator(reason));
-    };
-    process.on(name, handler);
-    return { name, handler };
-  });
-  const unforeseen = (error: unknown): void => {
-    controller.abort(new UnforeseenError(error));
+const echo: Seconds = 0.1;
+
+export interface StopWishes {
+  /** Aborted by the first wish to end, or by what broke outside a step. */
+  readonly signal: AbortSignal;
+  /** Aborted by the second wish: whoever repeats it will not wait for an answer that may never come. */
+  readonly hurry: AbortSignal;
+  /** The same wish as Ctrl-C, which at a question is a key and no signal. */
+  readonly wish: () => void;
+  release(): void;
+}
+
+/**
+ * Turns the wish to end the program, and anything that breaks outside a step, into a run that ends safely:
+ * the step is left, the bench is made safe, the record is closed. The first wish waits for the question that
+ * is under way, so that nothing is left unsaid; the second does not. Any further one changes nothing.
+ */
+export function stopOnSignals(streams: Streams): StopWishes {
+  const first = new AbortController();
+  const second = new AbortController();
+  let wishedAt = -Infinity;
+  const wish = (reason: string): void => {
+    if (second.signal.aborted || realClock.now() - wishedAt < echo) return;
+    wishedAt = realClock.now();
+    if (first.signal.aborted) {
+      streams.stderr.write(
+        '\nnot waiting any longer: what is under way is broken off, the bench made safe\n',
+      );
+      second.abort();
+    } else {
+      streams.stderr.write(`\n${reason}; making the bench safe\n`);
+      first.abort(new StoppedByOperator(reason));
+    }
   };
-  process.on('uncaughtException', unforeseen);
-  process.on('unhandledRejection', unforeseen);
+  const handlers: [string, (thrown: unknown) => void][] = Object.entries(reasons).map(([name, reason]) => [
+    name,
+    () => {
+      wish(reason);
+    },
+  ]);
+  const unforeseen = (thrown: unknown): void => {
+    first.abort(new UnforeseenError(thrown));
+  };
+  handlers.push(['uncaughtException', unforeseen], ['unhandledRejection', unforeseen]);
+  // A file that grows beyond what the shell allows would end the program; so it is a write that fails.
+  handlers.push(['SIGXFSZ', () => undefined]);
+  for (const [name, handler] of handlers) process.on(name, handler);
   return {
-    signal: controller.signal,
+    signal: first.signal,
+    hurry: second.signal,
+    wish: () => {
+      wish(reasons.SIGINT);
+    },
     release: () => {
-      for (const { name, handler } of handlers) process.off(name, handler);
-      process.off('uncaughtException', unforeseen);
-      process.off('unhandledRejection', unforeseen);
+      for (const [name, handler] of handlers) process.off(name, handler);
     },
   };
 }

@@ -13,6 +13,8 @@ interface Terminal {
   readonly output: Writable & { readonly columns?: number };
   /** Cautions are acknowledged beforehand. */
   readonly yes: boolean;
+  /** Told of Ctrl-C at a question, which is a key there and no signal; it aborts the signal of the question. */
+  readonly interrupted: () => void;
 }
 
 /** The person at the keyboard. Talk goes to stderr, so that stdout carries results only. */
@@ -77,8 +79,8 @@ export class TerminalOperator implements Operator {
     lines.on('error', () => {
       closed.abort(closedAtQuestion());
     });
-    lines.once('SIGINT', () => {
-      closed.abort(new StoppedByOperator('stopped with Ctrl-C at a question'));
+    lines.on('SIGINT', () => {
+      this.#terminal.interrupted();
     });
     try {
       return await lines.question(this.#fitted(text), { signal: AbortSignal.any([signal, closed.signal]) });

@@ -13,8 +13,16 @@ function terminal(facts: { readonly yes?: boolean; readonly isTTY?: boolean; rea
   output.on('data', (chunk: Buffer) => {
     text += chunk.toString();
   });
-  const operator = new TerminalOperator({ input, output, yes: facts.yes ?? false });
-  return { input, output, operator, shown: () => text };
+  const stop = new AbortController();
+  const operator = new TerminalOperator({
+    input,
+    output,
+    yes: facts.yes ?? false,
+    interrupted: () => {
+      stop.abort(new StoppedByOperator('stopped with Ctrl-C'));
+    },
+  });
+  return { input, output, operator, shown: () => text, stop };
 }
 
 const never = new AbortController().signal;
@@ -125,12 +133,12 @@ describe('a question on a terminal never hangs', () => {
   });
 
   it('when Ctrl-C is pressed, which comes as a key there', async () => {
-    const { input, operator } = terminal({ keys: 'raw' });
-    const asked = ask(operator);
+    const { input, operator, stop } = terminal({ keys: 'raw' });
+    const asked = ask(operator, stop.signal);
     input.write('\u0003');
     await expect(asked).rejects.toMatchObject({
       code: 'STOPPED_BY_OPERATOR',
-      message: 'stopped with Ctrl-C at a question',
+      message: 'stopped with Ctrl-C',
     });
   });
 
@@ -146,8 +154,8 @@ describe('someone is there', () => {
   it('only where the input is a terminal', () => {
     expect(terminal().operator.present).toBe(true);
     expect(terminal({ isTTY: false }).operator.present).toBe(false);
-    expect(
-      new TerminalOperator({ input: new PassThrough(), output: new PassThrough(), yes: true }).present,
-    ).toBe(false);
+    const [input, output] = [new PassThrough(), new PassThrough()];
+    const piped = new TerminalOperator({ input, output, yes: true, interrupted: () => undefined });
+    expect(piped.present).toBe(false);
   });
 });
