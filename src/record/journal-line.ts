@@ -14,11 +14,18 @@ export function parseLine(line: Buffer, first: boolean): TimedEvent | undefined 
   const { event: name, t } = fields;
   const shape = typeof name === 'string' ? shapes.get(name) : undefined;
   if (shape === undefined || !isNumber(t) || first !== (name === 'opened')) return undefined;
-  if (mustBeSealed.has(name as JournalEvent['event']) && !isSealed(line)) return undefined;
+  if (needsSeal(fields) && !isSealed(line)) return undefined;
   for (const [field, fits] of shape) {
     if (!fits(fields[field])) return undefined;
   }
   return event as TimedEvent;
+}
+
+/** Nor is anything carried on from the end of a step that bears none. */
+function needsSeal({ event, carried }: Readonly<Record<string, unknown>>): boolean {
+  return (
+    mustBeSealed.has(event as JournalEvent['event']) || (event === 'step-ended' && carried !== undefined)
+  );
 }
 
 function parseJson(text: string): unknown {

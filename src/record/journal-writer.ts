@@ -3,7 +3,7 @@ import { dirname } from 'node:path';
 import type { Hash } from 'node:crypto';
 import type { Seconds } from '../quantity/quantity.js';
 import { flushFolder } from './flush-folder.js';
-import { sealedEvents, type JournalEvent } from './journal-event.js';
+import { sealedEvents, type JournalEvent, type TimedEvent } from './journal-event.js';
 import { RecordWriteError } from './record-error.js';
 import { newSealer, sealLine } from './seal.js';
 
@@ -14,8 +14,8 @@ import { newSealer, sealLine } from './seal.js';
 export class JournalWriter {
   readonly #path: string;
   readonly #file: number;
-  readonly #began: Seconds;
   readonly #now: () => Seconds;
+  #began: Seconds;
   readonly #hash: Hash = newSealer();
   /** Of whole lines. */
   #bytes = 0;
@@ -41,14 +41,40 @@ export class JournalWriter {
    * @throws RecordWriteError
    */
   append(event: JournalEvent): void {
-    if (this.#torn !== undefined) throw this.#torn;
     const t = Math.round((this.#now() - this.#began) * 1e6) / 1e6;
+    this.#write({ t, ...event }, { flush: sealedEvents.has(event.event) });
+  }
+
+  /**
+   * Appends what another journal holds, with the time that it has there. It is on the disk after `goOnFrom` only:
+   * what is copied can be copied again.
+   * @throws RecordWriteError
+   */
+  copy(event: TimedEvent): void {
+    this.#write(event, { flush: false });
+  }
+
+  /**
+   * Flushes what was copied to the disk. What is appended from now on happens at `t` and later.
+   * @throws RecordWriteError
+   */
+  goOnFrom(t: Seconds): void {
+    try {
+      fdatasyncSync(this.#file);
+    } catch (cause) {
+      throw new RecordWriteError(this.#path, cause);
+    }
+    this.#began = this.#now() - t;
+  }
+
+  #write(event: TimedEvent, { flush }: { readonly flush: boolean }): void {
+    if (this.#torn !== undefined) throw this.#torn;
+    const plain = JSON.stringify(event);
     const sealed = sealedEvents.has(event.event);
-    const plain = JSON.stringify({ t, ...event });
     const line = Buffer.from((sealed ? sealLine(this.#hash, plain) : plain) + '\n');
     try {
       writeAll(this.#file, line);
-      if (sealed) fdatasyncSync(this.#file);
+      if (flush) fdatasyncSync(this.#file);
     } catch (cause) {
       const error = new RecordWriteError(this.#path, cause);
       this.#takeBack(error);

@@ -12,6 +12,7 @@ import type { Progress, StepContext, Tried } from '../steps/step-kind.js';
 import { cautionTexts } from './cautions.js';
 import type { Plan } from './plan.js';
 import { StoppedByOperator, UnforeseenError } from './stopped.js';
+import type { TakenOver } from './taken-over.js';
 
 export interface Performance {
   readonly plan: Plan;
@@ -22,6 +23,8 @@ export interface Performance {
   /** Aborted with a StoppedByOperator when the person wants the run to end. */
   readonly signal: AbortSignal;
   readonly watch: RunWatcher;
+  /** Where an earlier run was broken off, and this one goes on. */
+  readonly from?: TakenOver | undefined;
 }
 
 /** Told of what goes on; it can't change it. */
@@ -109,10 +112,10 @@ function noteTrip({ journal }: Performance, trip: GuardTrippedError): void {
   }
 }
 
-async function begin({ plan, bench, journal, operator, signal }: Performance): Promise<void> {
+async function begin({ plan, bench, journal, operator, signal, from }: Performance): Promise<void> {
   await checkInputIsOff(bench);
   await checkMeters(bench);
-  const { wiring } = plan.procedure;
+  const wiring = [...plan.procedure.wiring, ...(from?.standing ?? [])];
   if (wiring.length > 0) {
     const acknowledged = await operator.acknowledge('wiring', wiring.join('\n'), signal);
     if (acknowledged === 'refused') throw new StoppedByOperator('the wiring was not acknowledged');
@@ -136,20 +139,20 @@ async function lookAtVoltage({ plan, bench, journal }: Performance): Promise<voi
 }
 
 async function goThrough(performance: Performance): Promise<void> {
-  const { plan, bench, journal, operator, clock, signal, watch } = performance;
-  const known = { ...plan.known };
-  const tried: Tried = {};
-  const earths: StepContext['earths'] = new Map();
+  const { plan, bench, journal, operator, clock, signal, watch, from } = performance;
+  const known = { ...plan.known, ...from?.known };
+  const tried: Tried = { ...from?.tried };
+  const earths: StepContext['earths'] = new Map(from?.earths);
   const limits = {
     ...plan.ceilings,
     ratedVoltage: plan.underTest.rated.voltage,
-    temperature: plan.bench.limits.temperature,
   };
-  const guards = new Guards(limits);
+  const guards = new Guards(limits, plan.bench, plan.drivers);
   let looked = false;
   for (const [index, planned] of plan.steps.entries()) {
-    signal.throwIfAborted();
     const step = index + 1;
+    if (step <= (from?.steps ?? 0)) continue;
+    signal.throwIfAborted();
     if (planned.kind.needs.liveModule && !looked) {
       await lookAtVoltage(performance);
       looked = true;
