@@ -15,6 +15,8 @@ interface Options {
   readonly cwd?: string;
   /** Options of Node itself. */
   readonly node?: readonly string[];
+  /** Beside our own environment. */
+  readonly env?: Readonly<Record<string, string>>;
 }
 
 /** A `railproof` in a process of its own, as a user has it; standard input is at its end. */
@@ -22,7 +24,7 @@ export function start(args: readonly string[], options: Options = {}): ChildProc
   return spawn(process.execPath, [...(options.node ?? []), program, ...args], {
     cwd: options.cwd ?? root,
     stdio: ['ignore', 'pipe', 'pipe'],
-    env: { ...process.env, NO_COLOR: '1' },
+    env: { ...process.env, NO_COLOR: '1', ...options.env },
   });
 }
 
