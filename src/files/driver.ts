@@ -1,3 +1,4 @@
+import type { Expression } from './expression.js';
 import type { Amperes, Dimension, Ratio, Seconds, Volts, Watts } from '../quantity/quantity.js';
 
 export type Role = 'load' | 'meter' | 'scanner' | 'thermometer' | 'source';
@@ -11,9 +12,9 @@ export interface Driver {
   /** The question for the identity. */
   readonly identify: string;
   /** What the answer must look like; any answer will do when it is left out. */
-  readonly identity?: RegExp;
+  readonly identity?: Expression;
   /** The instrument's error queue, or that it has none. */
-  readonly errors: 'none' | { readonly ask: string; readonly clear: RegExp };
+  readonly errors: 'none' | { readonly ask: string; readonly clear: Expression };
   readonly prepare: readonly string[];
   readonly release: readonly string[];
   /** Messages by operation; `{amps}` and `{volts}` stand for the value. */
@@ -49,17 +50,17 @@ export type DriverReading =
       readonly kind: 'number';
       readonly ask: readonly string[];
       readonly dimension: Dimension;
-      readonly pattern?: RegExp;
+      readonly pattern?: Expression;
     }
   | {
       readonly kind: 'flag';
       readonly ask: readonly string[];
-      readonly trueWhen: RegExp;
+      readonly trueWhen: Expression;
       /** What a no looks like, where it is none of `0`, `OFF`, `FALSE` and `NO`. */
-      readonly falseWhen?: RegExp;
+      readonly falseWhen?: Expression;
     }
   /** `channelIn` finds the number in a group named `value`; a reply without one means that none is closed. */
-  | { readonly kind: 'channel'; readonly ask: readonly string[]; readonly channelIn: RegExp };
+  | { readonly kind: 'channel'; readonly ask: readonly string[]; readonly channelIn: Expression };
 
 /** Half-widths of the promised error: a part of the reading plus a fixed part, in the reading's unit. */
 export interface Accuracy {
@@ -73,7 +74,7 @@ export interface Accuracy {
 export const operationsOf = {
   load: {
     must: ['make-safe', 'input-on', 'input-off', 'current-mode', 'set-current'],
-    may: ['voltage-mode', 'set-voltage', 'protect-current', 'protect-voltage'],
+    may: ['voltage-mode', 'set-voltage', 'protect-current', 'protect-voltage', 'protect-power'],
   },
   // Told one after the other, as in a trial, they leave it at dc voltage.
   meter: { must: ['make-safe'], may: ['measure-resistance', 'measure-voltage'] },

@@ -18,7 +18,7 @@ export async function readErrorQueue(
   if (errors === 'none') return { entries, clear: true };
   while (entries.length < mostEntries) {
     const reply = (await dialogue.ask(errors.ask)).trim();
-    if (reply.search(errors.clear) !== -1) return { entries, clear: true };
+    if (errors.clear.finds(reply)) return { entries, clear: true };
     try {
       entries.push(parseScpiError(reply, { address: dialogue.address, question: errors.ask }));
     } catch (error) {

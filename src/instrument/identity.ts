@@ -12,7 +12,7 @@ export function isIdentityFor(driver: Driver): (reply: string) => boolean {
     return (
       /^[\x20-\x7e]{1,300}$/.test(text) &&
       !number.test(text) &&
-      (driver.identity === undefined || text.search(driver.identity) !== -1)
+      (driver.identity === undefined || driver.identity.finds(text))
     );
   };
 }

@@ -1,4 +1,5 @@
 import type { DriverReading } from '../files/driver.js';
+import { longestSearched } from '../files/expression.js';
 import { ReplyNotUnderstoodError } from './reply-errors.js';
 import { parseScpiNumber, type Measurement } from './scpi-number.js';
 
@@ -7,10 +8,12 @@ export interface About {
   readonly question: string;
 }
 
-/** No reading is longer; the patterns of driver files are not let loose on more. */
-const longest = 1000;
-
 const no = /^(?:.*[^A-Z0-9.])?(?:[+-]?0+|OFF|FALSE|NO)$/i;
+
+/** What is longer than any reading makes no sense, whatever is in it. */
+function searchedIn(reply: string): string | undefined {
+  return reply.length <= longestSearched ? reply.trim() : undefined;
+}
 
 /**
  * The number in a reply: the whole reply, or what the driver's pattern calls `value`.
@@ -22,7 +25,8 @@ export function readNumber(
   about: About,
 ): Measurement {
   if (reading.pattern === undefined) return parseScpiNumber(reply, about);
-  const value = reply.length <= longest ? reading.pattern.exec(reply.trim())?.groups?.['value'] : undefined;
+  const text = searchedIn(reply);
+  const value = text === undefined ? undefined : reading.pattern.group('value', text);
   if (value === undefined) {
     throw new ReplyNotUnderstoodError({
       ...about,
@@ -43,8 +47,9 @@ export function readChannel(
   about: About,
 ): number | null {
   const expected = `a reply in which /${reading.channelIn.source}/ finds a channel`;
-  if (reply.length > longest) throw new ReplyNotUnderstoodError({ ...about, reply, expected });
-  const value = reading.channelIn.exec(reply.trim())?.groups?.['value'];
+  const text = searchedIn(reply);
+  if (text === undefined) throw new ReplyNotUnderstoodError({ ...about, reply, expected });
+  const value = reading.channelIn.group('value', text);
   if (value === undefined) return null;
   if (!/^\d{1,6}$/.test(value)) throw new ReplyNotUnderstoodError({ ...about, reply, expected });
   return Number(value);
@@ -60,14 +65,14 @@ export function readFlag(
   reading: Extract<DriverReading, { kind: 'flag' }>,
   about: About,
 ): boolean {
-  const text = reply.length <= longest ? reply.trim() : '';
-  if (text.search(reading.trueWhen) !== -1) return true;
-  const { falseWhen = no } = reading;
-  if (text !== '' && text.search(falseWhen) !== -1) return false;
-  const expectedNo = falseWhen === no ? '0, OFF, FALSE or NO,' : `/${falseWhen.source}/`;
+  const text = searchedIn(reply);
+  const { trueWhen, falseWhen } = reading;
+  if (text !== undefined && trueWhen.finds(text)) return true;
+  if (text !== undefined && text !== '' && (falseWhen?.finds(text) ?? no.test(text))) return false;
+  const expectedNo = falseWhen === undefined ? '0, OFF, FALSE or NO,' : `/${falseWhen.source}/`;
   throw new ReplyNotUnderstoodError({
     ...about,
     reply,
-    expected: `a reply that fits /${reading.trueWhen.source}/, or ${expectedNo}`,
+    expected: `a reply that fits /${trueWhen.source}/, or ${expectedNo}`,
   });
 }

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { expression } from '../../src/files/expression.js';
 import { makeSafe, makeSafeUnopened } from '../../src/bench/make-safe.js';
 import { openBench } from '../../src/bench/open-bench.js';
 import { VirtualClock } from '../../src/clock/virtual-clock.js';
@@ -152,7 +153,7 @@ describe('that a bench is safe is not claimed', () => {
       load: {
         readings: {
           ...fromDriver.readings,
-          'input-state': { kind: 'flag', ask: ['INP?'], trueWhen: /^[01]$/ },
+          'input-state': { kind: 'flag', ask: ['INP?'], trueWhen: expression('^[01]$') },
         },
       },
     });

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { expression } from '../../src/files/expression.js';
 import { nursery } from './nursery-bench.js';
 
 describe('a bench that is opened', () => {
@@ -51,7 +52,7 @@ describe('a bench that is opened', () => {
   });
 
   it('closes the only one it had opened when that is not what its driver is for', async () => {
-    const { open, lines } = await nursery({ load: { identity: /^PUMP/ } });
+    const { open, lines } = await nursery({ load: { identity: expression('^PUMP') } });
     await expect(open()).rejects.toMatchObject({ code: 'WRONG_INSTRUMENT' });
     expect(lines).toHaveLength(1);
     await expect(lines[0]?.write(Buffer.from('*IDN?\n'))).rejects.toThrow(/closed/);

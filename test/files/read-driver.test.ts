@@ -2,6 +2,7 @@ import { mkdir, mkdtemp, rm, writeFile } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { describe, expect, it, onTestFinished } from 'vitest';
+import { expression } from '../../src/files/expression.js';
 import { parseDriver, readDriver } from '../../src/files/read-driver.js';
 import { driverExample } from './design-examples.js';
 import { problemsOf } from './problems-of.js';
@@ -19,7 +20,7 @@ it('the example of the design is read', () => {
     summary: 'Electronic loads that answer INPut, CURRent and MEASure',
     wire: { sendEnd: '\n', replyEnd: '\n', gap: 0, timeout: 1 },
     identify: '*IDN?',
-    errors: { ask: 'SYST:ERR?', clear: /^[+-]?0\b/ },
+    errors: { ask: 'SYST:ERR?', clear: expression('^[+-]?0\\b') },
     prepare: ['*CLS'],
     release: [],
     operations: {
@@ -35,7 +36,7 @@ it('the example of the design is read', () => {
     readings: {
       voltage: { kind: 'number', ask: ['MEAS:VOLT?'], dimension: 'voltage' },
       current: { kind: 'number', ask: ['MEAS:CURR?'], dimension: 'current' },
-      'input-state': { kind: 'flag', ask: ['INP?'], trueWhen: /^(1|ON)$/ },
+      'input-state': { kind: 'flag', ask: ['INP?'], trueWhen: expression('^(1|ON)$') },
     },
     settling: 0.02,
     ratings: { voltage: 150, current: 40, power: 200, leastVoltage: 1 },
@@ -63,13 +64,18 @@ it('a meter that is spoken to simply needs little', () => {
     summary: 'Meters that answer READ?',
     wire: { sendEnd: '\n', replyEnd: '\n', gap: 0, timeout: 1 },
     identify: '*IDN?',
-    identity: /^METER/,
+    identity: expression('^METER'),
     errors: 'none',
     prepare: [],
     release: [],
     operations: { 'make-safe': [] },
     readings: {
-      voltage: { kind: 'number', ask: ['CONF', 'READ?'], dimension: 'voltage', pattern: /VOLT (?<value>.*)/ },
+      voltage: {
+        kind: 'number',
+        ask: ['CONF', 'READ?'],
+        dimension: 'voltage',
+        pattern: expression('VOLT (?<value>.*)'),
+      },
     },
     settling: 0,
     ratings: {},
@@ -167,7 +173,7 @@ describe('one mistake is one line, at its place', () => {
     [
       'true-when: "^(1|ON)$"',
       'true-when: "^(1|ON$"',
-      "22:42: readings.input-state.true-when: '^(1|ON$' is no regular expression: unterminated group",
+      "22:42: readings.input-state.true-when: '^(1|ON$' is no regular expression: missing closing ), in '^(1|ON$'",
     ],
     [
       'true-when: "^(1|ON)$"',
@@ -231,7 +237,7 @@ describe('a scanner', () => {
   it('says which channel is closed by a number that is found in its reply', () => {
     const { readings } = parseDriver(scanner('{ ask: "CLOSED?", channel-in: "(?<value>[0-9]+)" }'), 's.yaml');
     expect(readings).toEqual({
-      'closed-channel': { kind: 'channel', ask: ['CLOSED?'], channelIn: /(?<value>[0-9]+)/ },
+      'closed-channel': { kind: 'channel', ask: ['CLOSED?'], channelIn: expression('(?<value>[0-9]+)') },
     });
   });
 
@@ -277,7 +283,7 @@ describe('a meter that can be asked what it is set to', () => {
     expect(parseDriver(right, 'm.yaml').readings['measures-voltage']).toEqual({
       kind: 'flag',
       ask: ['CONF?'],
-      trueWhen: /VOLT/,
+      trueWhen: expression('VOLT'),
     });
   });
 });

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { expression } from '../../src/files/expression.js';
 import { VirtualClock } from '../../src/clock/virtual-clock.js';
 import type { Driver } from '../../src/files/driver.js';
 import { Instrument } from '../../src/instrument/instrument.js';
@@ -59,7 +60,7 @@ describe('opening an instrument', () => {
     ['a number', '15.1'],
   ])('refuses what answers with %s', async (_, identity) => {
     await expect(
-      opened({ driver: { identity: /LOAD/ }, replies: { '*IDN?': identity } }),
+      opened({ driver: { identity: expression('LOAD') }, replies: { '*IDN?': identity } }),
     ).rejects.toMatchObject({ code: 'WRONG_INSTRUMENT', exitCode: 69, role: 'load', driver: 'toy-load' });
   });
 

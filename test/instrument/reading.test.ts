@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { expression } from '../../src/files/expression.js';
 import { readChannel, readFlag, readNumber } from '../../src/instrument/reading.js';
 
 const about = { address: 'tcp://127.0.0.1:5025', question: 'VOL?' };
@@ -8,9 +9,9 @@ describe('a number that a driver finds by its pattern', () => {
     kind: 'number',
     ask: ['VOL?'],
     dimension: 'voltage',
-    pattern: /^(?<value>[+-]?[0-9.]+) ?V$/,
+    pattern: expression('^(?<value>[+-]?[0-9.]+) ?V$'),
   } as const;
-  const prefixed = { ...short, pattern: /^VOLT (?<value>\S+)$/ } as const;
+  const prefixed = { ...short, pattern: expression('^VOLT (?<value>\\S+)$') } as const;
 
   it.each([
     ['15.21V', short, { kind: 'value', value: 15.21 }],
@@ -39,7 +40,7 @@ describe('a number that a driver finds by its pattern', () => {
 });
 
 describe('a yes or no', () => {
-  const reading = { kind: 'flag', ask: ['INP?'], trueWhen: /^(INPUT )?(1|ON)$/ } as const;
+  const reading = { kind: 'flag', ask: ['INP?'], trueWhen: expression('^(INPUT )?(1|ON)$') } as const;
 
   it.each(['1', 'ON', ' ON ', 'INPUT ON'])('is yes by "%s"', (reply) => {
     expect(readFlag(reply, reading, about)).toBe(true);
@@ -60,8 +61,21 @@ describe('a yes or no', () => {
   );
 });
 
+describe('a yes or no', () => {
+  it('is neither in a reply that is longer than any, even where an empty one means yes', () => {
+    const reading = { kind: 'flag', ask: ['INP?'], trueWhen: expression('^1?$') } as const;
+    expect(readFlag('', reading, about)).toBe(true);
+    expect(() => readFlag(`1${' '.repeat(2000)}`, reading, about)).toThrow(/0, OFF, FALSE or NO/);
+  });
+});
+
 describe('a yes or no whose no the driver describes', () => {
-  const reading = { kind: 'flag', ask: ['CONF?'], trueWhen: /^"VOLT/, falseWhen: /^"[A-Z]+/ } as const;
+  const reading = {
+    kind: 'flag',
+    ask: ['CONF?'],
+    trueWhen: expression('^"VOLT'),
+    falseWhen: expression('^"[A-Z]+'),
+  } as const;
 
   it.each([
     ['"VOLT 10,0.001"', true],
@@ -82,7 +96,11 @@ describe('a yes or no whose no the driver describes', () => {
 });
 
 describe('the closed channel of a scanner', () => {
-  const reading = { kind: 'channel', ask: ['CLOSED?'], channelIn: /^\(@(?<value>[0-9,]+)\)$/ } as const;
+  const reading = {
+    kind: 'channel',
+    ask: ['CLOSED?'],
+    channelIn: expression('^\\(@(?<value>[0-9,]+)\\)$'),
+  } as const;
 
   it.each([
     ['(@101)', 101],

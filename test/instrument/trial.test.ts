@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { expression } from '../../src/files/expression.js';
 import { VirtualClock } from '../../src/clock/virtual-clock.js';
 import type { Driver } from '../../src/files/driver.js';
 import { type TrialResult, tryDriver } from '../../src/instrument/trial.js';
@@ -157,7 +158,7 @@ describe('trying a driver', () => {
   });
 
   it('says of another instrument that its name does not fit', async () => {
-    const { results } = await trialOf({ driver: { identity: /METER/ } });
+    const { results } = await trialOf({ driver: { identity: expression('METER') } });
     expect(results[0]).toMatchObject({ verdict: 'unclear', received: 'NURSERY,LOAD,K1,1.0' });
   });
 

@@ -1,3 +1,4 @@
+import { expression } from '../../src/files/expression.js';
 import type { Driver } from '../../src/files/driver.js';
 import type { ModuleLimit, SimulatedModule, Simulation } from '../../src/files/simulation-section.js';
 import type { Connection } from '../../src/instrument/connection.js';
@@ -12,7 +13,7 @@ export const loadDriver: Driver = {
   summary: '',
   wire,
   identify: '*IDN?',
-  errors: { ask: 'SYST:ERR?', clear: /^[+-]?0\b/ },
+  errors: { ask: 'SYST:ERR?', clear: expression('^[+-]?0\\b') },
   prepare: ['*CLS'],
   release: [],
   operations: {
@@ -28,7 +29,7 @@ export const loadDriver: Driver = {
   readings: {
     voltage: { kind: 'number', ask: ['MEAS:VOLT?'], dimension: 'voltage' },
     current: { kind: 'number', ask: ['MEAS:CURR?'], dimension: 'current' },
-    'input-state': { kind: 'flag', ask: ['INP?'], trueWhen: /^(1|ON)$/ },
+    'input-state': { kind: 'flag', ask: ['INP?'], trueWhen: expression('^(1|ON)$') },
   },
   settling: 0.02,
   ratings: { voltage: 150, current: 40, power: 200, leastVoltage: 1 },
@@ -41,7 +42,7 @@ export const meterDriver: Driver = {
   summary: '',
   wire,
   identify: '*IDN?',
-  errors: { ask: 'SYST:ERR?', clear: /^[+-]?0\b/ },
+  errors: { ask: 'SYST:ERR?', clear: expression('^[+-]?0\\b') },
   prepare: ['*CLS', 'CONF:VOLT:DC'],
   release: [],
   operations: { 'make-safe': ['*CLS'] },

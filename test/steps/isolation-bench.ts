@@ -1,3 +1,4 @@
+import { expression } from '../../src/files/expression.js';
 import { Guards } from '../../src/bench/guards.js';
 import { type OpenBench, openBench } from '../../src/bench/open-bench.js';
 import type { Driver } from '../../src/files/driver.js';
@@ -64,8 +65,18 @@ function ohmmeter(driver: Driver): Driver {
     readings: {
       ...driver.readings,
       resistance: { kind: 'number', ask: ['READ?'], dimension: 'resistance' },
-      'measures-voltage': { kind: 'flag', ask: ['FUNC?'], trueWhen: /VOLT/, falseWhen: /[A-Z]{3,}/ },
-      'measures-resistance': { kind: 'flag', ask: ['FUNC?'], trueWhen: /RES/, falseWhen: /[A-Z]{3,}/ },
+      'measures-voltage': {
+        kind: 'flag',
+        ask: ['FUNC?'],
+        trueWhen: expression('VOLT'),
+        falseWhen: expression('[A-Z]{3,}'),
+      },
+      'measures-resistance': {
+        kind: 'flag',
+        ask: ['FUNC?'],
+        trueWhen: expression('RES'),
+        falseWhen: expression('[A-Z]{3,}'),
+      },
     },
     accuracy: { ...driver.accuracy, resistance: ohmmeterAccuracy },
   };
@@ -152,7 +163,7 @@ export async function checkIsolation(script: IsolationScript = {}): Promise<Isol
     step: 1,
     bench,
     limits,
-    guards: new Guards(limits),
+    guards: new Guards(limits, place.description, drivers),
     underTest: underTestOf(circuit, modules),
     journal: { append },
     clock,
