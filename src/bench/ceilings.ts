@@ -1,6 +1,8 @@
 import type { Bench, BenchDrivers } from '../files/bench.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Amperes, Celsius, Dimension, Ratio, Volts, Watts } from '../quantity/quantity.js';
 
-/** What may never be exceeded on this bench, and who says so. */
+/** What may never be exceeded in a run, and who says so. */
 export interface Ceilings {
   /** In volts. */
   readonly voltage: Ceiling;
@@ -8,12 +10,27 @@ export interface Ceilings {
   readonly current: Ceiling;
   /** In watts. */
   readonly power: Ceiling;
+  /** In degrees Celsius; undefined where nobody limits it. */
+  readonly temperature?: Ceiling | undefined;
 }
 
 export interface Ceiling {
   readonly value: number;
-  /** In words, for messages: `the bench`, `the load's rating`. */
+  /** In words, for messages: `the bench`, `the load's rating`, `the procedure`, `the nameplate`. */
   readonly setBy: string;
+}
+
+/** What a run asks for besides what the bench allows. */
+export interface RunLimits {
+  /** What the label of the module says, of several what theirs come to together. */
+  readonly ratedVoltage?: Volts;
+  /** The procedure's own. */
+  readonly procedure?: {
+    readonly voltage?: Volts;
+    readonly current?: Amperes;
+    readonly power?: Watts;
+    readonly temperature?: Celsius;
+  };
 }
 
 /**
@@ -23,33 +40,58 @@ export interface Ceiling {
 export const overCurrentFactor = 1.1;
 
 /**
+ * Part of its rated voltage by which a module may be off its label: with more it is another module, or one
+ * that no longer regulates.
+ */
+export const offNameplate: Ratio = 0.25;
+
+/**
  * Part of its rated current that a load is asked for at most. It protects itself at its rating, and its own
  * error must not carry it there: the protection trips 5 % above the highest set-point, or further.
  */
 const ofRatedCurrent = 0.95;
 
 /**
- * The strictest of the bench's limits and the ratings of the instruments that carry the quantity; the load's
- * rated current counts less 5 %.
+ * The strictest of the bench's limits, the ratings of the instruments that carry the quantity (the load's
+ * rated current counts less 5 %), the procedure's limits, and for the voltage the nameplate and a quarter
+ * more. Of two that say the same the bench is named, then the instrument.
  */
-export function ceilingsOf(bench: Bench, drivers: BenchDrivers): Ceilings {
+export function ceilingsOf(
+  bench: Bench,
+  drivers: BenchDrivers,
+  { ratedVoltage, procedure = {} }: RunLimits = {},
+): Ceilings {
   const { load, meter, scanner } = drivers;
+  const { limits } = bench;
   return {
     voltage: strictest(
-      { value: bench.limits.voltage, setBy: 'the bench' },
-      rating(load.ratings.voltage, "the load's rating"),
-      rating(meter?.ratings.voltage, "the meter's rating"),
-      rating(scanner?.ratings.voltage, "the scanner's rating"),
+      { value: limits.voltage, setBy: 'the bench' },
+      by("the load's rating", load.ratings.voltage),
+      by("the meter's rating", meter?.ratings.voltage),
+      by("the scanner's rating", scanner?.ratings.voltage),
+      by('the procedure', procedure.voltage),
+      by('the nameplate', ratedVoltage === undefined ? undefined : ratedVoltage * (1 + offNameplate)),
     ),
-    current: strictest({ value: bench.limits.current, setBy: 'the bench' }, lessRoom(load.ratings.current)),
+    current: strictest(
+      { value: limits.current, setBy: 'the bench' },
+      lessRoom(load.ratings.current),
+      by('the procedure', procedure.current),
+    ),
     power: strictest(
-      { value: bench.limits.power, setBy: 'the bench' },
-      rating(load.ratings.power, "the load's rating"),
+      { value: limits.power, setBy: 'the bench' },
+      by("the load's rating", load.ratings.power),
+      by('the procedure', procedure.power),
     ),
+    temperature: coolest(by('the bench', limits.temperature), by('the procedure', procedure.temperature)),
   };
 }
 
-function rating(value: number | undefined, setBy: string): Ceiling | undefined {
+/** For messages: as it was set, without the digits that reckoning makes. */
+export function ceilingText({ value }: Ceiling, dimension: Dimension): string {
+  return formatQuantity(Number(value.toPrecision(6)), dimension);
+}
+
+function by(setBy: string, value: number | undefined): Ceiling | undefined {
   return value === undefined ? undefined : { value, setBy };
 }
 
@@ -57,6 +99,10 @@ function rating(value: number | undefined, setBy: string): Ceiling | undefined {
 function lessRoom(amps: number | undefined): Ceiling | undefined {
   if (amps === undefined) return undefined;
   return { value: Math.round(amps * ofRatedCurrent * 1000) / 1000, setBy: "the load's rating less 5 %" };
+}
+
+function coolest(bench: Ceiling | undefined, procedure: Ceiling | undefined): Ceiling | undefined {
+  return bench === undefined ? procedure : strictest(bench, procedure);
 }
 
 function strictest(first: Ceiling, ...others: readonly (Ceiling | undefined)[]): Ceiling {

@@ -1,13 +1,16 @@
+import type { Bench, BenchDrivers } from '../files/bench.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Amperes, Celsius, Dimension, Volts } from '../quantity/quantity.js';
+import type { Amperes, Dimension, Volts } from '../quantity/quantity.js';
 import { GuardTrippedError } from './bench-error.js';
-import { type Ceilings, overCurrentFactor } from './ceilings.js';
+import { type Ceilings, ceilingText, overCurrentFactor } from './ceilings.js';
+import { FrozenCurrent, FrozenMeter } from './frozen-readings.js';
+import { guardProbe, ImpossibleCurrents } from './impossible-readings.js';
 import type { Taken } from './sample.js';
+import { trustIn } from './trust.js';
 
 export interface GuardLimits extends Ceilings {
   /** The nameplate's; a voltage further below zero than a fiftieth of it is reversed polarity. */
   readonly ratedVoltage: Volts;
-  readonly temperature?: Celsius | undefined;
 }
 
 /** What the load had been told when something was read: nothing where its input was off. */
@@ -16,20 +19,32 @@ export interface Told {
   readonly voltage?: Volts;
 }
 
-/** The guards of one run. Every sample passes them before anything is made of it. */
+/**
+ * The guards of one run. Every sample passes them before anything is made of it. What they remember of earlier
+ * samples is a few numbers, however long the run is.
+ */
 export class Guards {
   readonly #limits: GuardLimits;
+  readonly #remembering: readonly Pick<FrozenCurrent | FrozenMeter | ImpossibleCurrents, 'look'>[];
 
-  constructor(limits: GuardLimits) {
+  constructor(limits: GuardLimits, bench: Bench, drivers: BenchDrivers) {
     this.#limits = limits;
+    const trust = trustIn(bench, drivers, limits.ratedVoltage);
+    this.#remembering = [new ImpossibleCurrents(trust), new FrozenCurrent(trust), new FrozenMeter(trust)];
   }
 
   /**
    * Looks at everything that was read at one moment.
    * @throws GuardTrippedError naming the guard, the reading and who set the limit.
    */
-  look(taken: readonly Taken[], _told: Told): void {
+  look(taken: readonly Taken[], told: Told): void {
     guard(taken, this.#limits);
+    const seen = {
+      current: valueOf(taken, 'load', 'current'),
+      atLoad: valueOf(taken, 'load', 'voltage'),
+      atMeter: valueOf(taken, 'meter', 'voltage'),
+    };
+    for (const one of this.#remembering) one.look(seen, told);
   }
 }
 
@@ -60,8 +75,10 @@ function guardVoltage(of: string, volts: number, limits: GuardLimits): void {
   if (volts > limits.voltage.value) {
     throw new GuardTrippedError(
       'over-voltage',
-      `the ${of} reads ${reading(volts, 'voltage')} and ${limits.voltage.setBy} allows ${formatQuantity(limits.voltage.value, 'voltage')}`,
-      'the module gives more than this bench is made for',
+      `the ${of} reads ${reading(volts, 'voltage')} and ${limits.voltage.setBy} allows ${ceilingText(limits.voltage, 'voltage')}`,
+      limits.voltage.setBy === 'the nameplate'
+        ? 'it is another module than its file says, or it does not regulate any more: unplug it'
+        : 'the module gives more than it may here',
     );
   }
   if (volts < -limits.ratedVoltage / 50) {
@@ -77,16 +94,17 @@ function guardCurrent(of: string, amps: number, limits: GuardLimits): void {
   if (amps <= limits.current.value * overCurrentFactor) return;
   throw new GuardTrippedError(
     'over-current',
-    `the ${of} reads ${reading(amps, 'current')} and ${limits.current.setBy} allows ${formatQuantity(limits.current.value, 'current')}`,
+    `the ${of} reads ${reading(amps, 'current')} and ${limits.current.setBy} allows ${ceilingText(limits.current, 'current')}`,
     'the load does not keep its set current',
   );
 }
 
-function guardTemperature(of: string, celsius: number, limits: GuardLimits): void {
-  if (limits.temperature === undefined || celsius <= limits.temperature) return;
+function guardTemperature(of: string, celsius: number, { temperature }: GuardLimits): void {
+  guardProbe(of, celsius, temperature?.value);
+  if (temperature === undefined || celsius <= temperature.value) return;
   throw new GuardTrippedError(
     'over-temperature',
-    `the ${of} reads ${reading(celsius, 'temperature')} and the bench allows ${formatQuantity(limits.temperature, 'temperature')}`,
+    `the ${of} reads ${reading(celsius, 'temperature')} and ${temperature.setBy} allows ${ceilingText(temperature, 'temperature')}`,
     'let it cool; see that nothing covers it, and ask for less current',
   );
 }
@@ -99,7 +117,7 @@ function guardPower(taken: readonly Taken[], limits: GuardLimits): void {
   if (!(power > limits.power.value)) return;
   throw new GuardTrippedError(
     'over-power',
-    `the load takes ${reading(power, 'power')} and ${limits.power.setBy} allows ${formatQuantity(limits.power.value, 'power')}`,
+    `the load takes ${reading(power, 'power')} and ${limits.power.setBy} allows ${ceilingText(limits.power, 'power')}`,
     'lower what the procedure asks, or use a larger load',
   );
 }

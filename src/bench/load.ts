@@ -1,9 +1,9 @@
 import type { Instrument } from '../instrument/instrument.js';
 import type { Measurement } from '../instrument/scpi-number.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Amperes, Volts } from '../quantity/quantity.js';
+import type { Amperes, Volts, Watts } from '../quantity/quantity.js';
 import { BeyondCeilingError, DisobeyedError } from './bench-error.js';
-import { type Ceilings, overCurrentFactor } from './ceilings.js';
+import { type Ceilings, ceilingText, overCurrentFactor } from './ceilings.js';
 
 export type InputState = 'on' | 'off';
 
@@ -35,6 +35,9 @@ export class Load {
     if (this.instrument.has('protect-voltage')) {
       await this.instrument.perform('protect-voltage', { volts: this.#ceilings.voltage.value });
     }
+    if (this.instrument.has('protect-power')) {
+      await this.instrument.perform('protect-power', { watts: this.#mostPower() });
+    }
   }
 
   /** A set-point of 0 A; the input is not touched. */
@@ -51,14 +54,14 @@ export class Load {
     const { current, power } = this.#ceilings;
     const asked = formatQuantity(amps, 'current', { significant: 4 });
     if (!(amps <= current.value)) {
-      throw new BeyondCeilingError(asked, formatQuantity(current.value, 'current'), current.setBy);
+      throw new BeyondCeilingError(asked, ceilingText(current, 'current'), current.setBy);
     }
     if (!(amps * volts <= power.value)) {
       const at = formatQuantity(volts, 'voltage', { significant: 4 });
       const taken = formatQuantity(amps * volts, 'power', { significant: 4 });
       throw new BeyondCeilingError(
         `${asked} at ${at}, which is ${taken},`,
-        formatQuantity(power.value, 'power'),
+        ceilingText(power, 'power'),
         power.setBy,
       );
     }
@@ -123,6 +126,12 @@ export class Load {
   #mostCurrent(): Amperes {
     const rated = this.instrument.driver.ratings.current ?? Number.POSITIVE_INFINITY;
     return Math.min(this.#ceilings.current.value * overCurrentFactor, rated);
+  }
+
+  /** The guards stop the run at the ceiling; the load's own protection stands behind them, not before. */
+  #mostPower(): Watts {
+    const rated = this.instrument.driver.ratings.power ?? Number.POSITIVE_INFINITY;
+    return Math.min(this.#ceilings.power.value * overCurrentFactor, rated);
   }
 
   isOn(): Promise<boolean> {

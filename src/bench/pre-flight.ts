@@ -1,6 +1,7 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import { PreFlightError } from './bench-error.js';
+import { offNameplate } from './ceilings.js';
 import { valueOf } from './guards.js';
 import { checkMeasuresVoltage } from './meter-mode.js';
 import { moduleVoltage } from './module-voltage.js';
@@ -26,8 +27,6 @@ export async function checkMeters({ instruments }: Pick<OpenBench, 'instruments'
   }
 }
 
-/** Part of the rated voltage by which the open-circuit voltage may differ before it is another module. */
-const tolerance = 0.25;
 /** Below this part of the rated voltage there is nothing there. */
 const nothing = 0.05;
 
@@ -60,7 +59,7 @@ export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): P
       'is it plugged in and switched on, are the leads in place?',
     );
   }
-  if (Math.abs(volts - rated) > rated * tolerance) {
+  if (Math.abs(volts - rated) > rated * offNameplate) {
     throw new PreFlightError(
       `the module reads ${read} and its nameplate says ${formatQuantity(rated, 'voltage')}`,
       'is this the right module file? Is the right module connected?',

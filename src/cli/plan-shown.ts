@@ -1,15 +1,16 @@
+import { type Ceiling, type Ceilings, ceilingText } from '../bench/ceilings.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Dimension, Seconds } from '../quantity/quantity.js';
 import { alignTable } from '../report/align.js';
 import type { Plan } from '../run/plan.js';
 
-/** A plan for a person: what would be done, how long it takes, what the bench never allows. */
-export function planAsText(plan: Plan): string {
-  const { current, voltage, power } = plan.ceilings;
+/** A plan for a person: what would be done, how long it takes, what the bench never allows; the first `done` steps of it are done. */
+export function planAsText(plan: Plan, done = 0): string {
   const rows = plan.steps.map(({ kind, summary, duration }, index) => [
     `${index + 1}`,
     kind.kind,
     summary,
-    `about ${formatQuantity(Math.ceil(duration), 'time')}`,
+    index < done ? 'done' : `about ${formatQuantity(Math.ceil(duration), 'time')}`,
   ]);
   return [
     `${plan.procedure.name}: ${plan.procedure.title}`,
@@ -17,30 +18,45 @@ export function planAsText(plan: Plan): string {
     ...plan.procedure.wiring.map((line) => `  wiring: ${line}`),
     ...alignTable(rows, ['right', 'left', 'left', 'left']).map((row) => `  ${row}`),
     `cautions to acknowledge: ${plan.cautions.length === 0 ? 'none' : plan.cautions.join(', ')}`,
-    `never above ${formatQuantity(current.value, 'current')} (${current.setBy}), ` +
-      `${formatQuantity(voltage.value, 'voltage')} (${voltage.setBy}), ` +
-      `${formatQuantity(power.value, 'power')} (${power.setBy})`,
-    `about ${formatQuantity(Math.ceil(plan.duration), 'time')} in all; nothing was touched`,
+    `never above ${ceilingsInWords(plan.ceilings)}`,
+    `about ${formatQuantity(Math.ceil(secondsLeft(plan, done)), 'time')} in all; nothing was touched`,
     '',
   ].join('\n');
+}
+
+function ceilingsInWords({ current, voltage, power, temperature }: Ceilings): string {
+  const said = (ceiling: Ceiling, dimension: Dimension): string =>
+    `${ceilingText(ceiling, dimension)} (${ceiling.setBy})`;
+  const always = [said(current, 'current'), said(voltage, 'voltage'), said(power, 'power')];
+  return [...always, ...(temperature === undefined ? [] : [said(temperature, 'temperature')])].join(', ');
+}
+
+/** What is left when the first steps are done. */
+function secondsLeft({ steps }: Plan, done: number): Seconds {
+  return steps.slice(done).reduce((sum, { duration }) => sum + duration, 0);
 }
 
 function underTestInWords({ underTest: { circuit, name } }: Plan): string {
   return circuit === 'single' ? `module ${name}` : `modules ${name} in ${circuit}`;
 }
 
-/** The same for a program; times in seconds, ceilings in A, V and W. */
-export function planAsJson(plan: Plan): object {
+/** The same for a program; times in seconds, ceilings in A, V, W and °C. */
+export function planAsJson(plan: Plan, done = 0): object {
   return {
     format: 'railproof/plan 1',
     procedure: plan.procedure.name,
     module: plan.underTest.name,
     circuit: plan.underTest.circuit,
     bench: plan.bench.name,
-    steps: plan.steps.map(({ kind, summary, duration }) => ({ kind: kind.kind, summary, seconds: duration })),
+    steps: plan.steps.map(({ kind, summary, duration }, index) => ({
+      kind: kind.kind,
+      summary,
+      seconds: duration,
+      ...(done === 0 ? {} : { done: index < done }),
+    })),
     wiring: plan.procedure.wiring,
     cautions: plan.cautions,
     ceilings: plan.ceilings,
-    seconds: plan.duration,
+    seconds: secondsLeft(plan, done),
   };
 }

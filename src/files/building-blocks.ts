@@ -10,7 +10,7 @@ import {
   readQuantityOrShare,
   referencesTo,
 } from '../quantity/parse-quantity.js';
-import type { Dimension, QuantityOrShare } from '../quantity/quantity.js';
+import type { Dimension, QuantityOrShare, ReferenceName } from '../quantity/quantity.js';
 import { shown } from '../quantity/shown-text.js';
 import { namePattern } from './name-pattern.js';
 import { didYouMean } from '../quantity/nearest.js';
@@ -52,6 +52,27 @@ export function quantityOrShare(
     const read = readQuantityOrShare(value, dimension);
     if (read.kind === 'absolute') checkBounds(read.value, String(value), dimension, bounds);
     else checkShare(read, dimension, bounds);
+    return read;
+  });
+}
+
+/** A quantity, or a share of the nameplate: for what must be known before anything is measured. */
+export function quantityOrNameplateShare(
+  dimension: 'voltage' | 'current',
+  description: string,
+  bounds: Bounds = {},
+): TextSchema<QuantityOrShare> {
+  const label: ReferenceName = `rated-${dimension}`;
+  const meta = {
+    description,
+    pattern: quantityOrSharePattern(dimension, [label]),
+    examples: [...examplesOf(dimension), `110 % of ${label}`],
+  };
+  return readFromText(meta, needed(dimension), (value) => {
+    const read = readQuantityOrShare(value, dimension);
+    if (read.kind === 'absolute') checkBounds(read.value, String(value), dimension, bounds);
+    else if (read.of === label) checkShare(read, dimension, bounds);
+    else throw notOnTheLabel(read.of, label);
     return read;
   });
 }
@@ -162,6 +183,14 @@ function freeText(pattern: RegExp, description: string, longest: number): z.ZodS
 
 function examplesOf(dimension: Dimension): string[] {
   return [...dimensionWords[dimension].examples];
+}
+
+function notOnTheLabel(name: ReferenceName, label: ReferenceName): QuantityError {
+  const expected = `a share here refers to ${label}`;
+  return new QuantityError(`${shown(name)} is known only once it has been measured; ${expected}`, {
+    found: shown(name),
+    expected,
+  });
 }
 
 function neitherNor(value: string, words: readonly string[], expected: string): QuantityError {

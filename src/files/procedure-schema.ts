@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { choice, line, name, paragraph } from './building-blocks.js';
+import { choice, line, name, paragraph, quantity, quantityOrNameplateShare } from './building-blocks.js';
 import { deratingSchema } from './derating-schema.js';
 import { headers } from './file-kind.js';
 import { cautions, circuits } from './procedure.js';
@@ -25,6 +25,17 @@ export const procedureSchema = z
       .max(cautions.length)
       .default([])
       .describe('Shown, and acknowledged, before anything is energised.'),
+    limits: z
+      .strictObject({
+        voltage: quantityOrNameplateShare('voltage', 'The highest voltage.', { above: 0 }).exactOptional(),
+        current: quantityOrNameplateShare('current', 'The highest current.', { above: 0 }).exactOptional(),
+        power: quantity('power', 'The highest power.', { above: 0 }).exactOptional(),
+        temperature: quantity('temperature', 'The highest temperature of a module.').exactOptional(),
+      })
+      .default({})
+      .describe(
+        'Never exceeded in this procedure; of these and of what the bench allows the strictest holds.',
+      ),
     steps: z.array(z.unknown()).min(1).max(200).describe('What is to be done, in order.'),
     criteria: z.array(z.unknown()).max(200).default([]).describe('What is required of the result.'),
     tolerance: line(

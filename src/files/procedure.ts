@@ -1,4 +1,4 @@
-import type { Celsius, QuantityOrAnyShare, Ratio } from '../quantity/quantity.js';
+import type { Celsius, QuantityOrAnyShare, QuantityOrShare, Ratio, Watts } from '../quantity/quantity.js';
 
 /** A procedure file: what is to be done, in order, and what is required of the result. */
 export interface Procedure {
@@ -9,11 +9,22 @@ export interface Procedure {
   /** How the bench is wired for it, an instruction a line. */
   readonly wiring: readonly string[];
   readonly cautions: readonly CautionName[];
+  readonly limits: ProcedureLimits;
   readonly steps: readonly ProcedureStep[];
   readonly criteria: readonly Criterion[];
   /** How far the findings may be from those of a baseline, where one is given: a shipped name or a path. */
   readonly tolerance?: string;
   readonly derating: Derating;
+}
+
+/**
+ * What the procedure itself never exceeds, on top of what the bench allows. A share is one of the nameplate.
+ */
+export interface ProcedureLimits {
+  readonly voltage?: QuantityOrShare;
+  readonly current?: QuantityOrShare;
+  readonly power?: Watts;
+  readonly temperature?: Celsius;
 }
 
 /** How the modules under test are wired: one alone, a parallel group, or a stack. */

@@ -35,7 +35,7 @@ export function parseProcedure(text: string, fileName: string, vocabulary: Vocab
     else complaints.push(...criterion);
   }
   if (checked.kind === 'bad' || complaints.length > 0) throw badFile('procedure', document, complaints);
-  const { name, title, purpose, circuit, wiring, cautions, tolerance, derating } = checked.value;
+  const { name, title, purpose, circuit, wiring, cautions, limits, tolerance, derating } = checked.value;
   return {
     name,
     title,
@@ -43,6 +43,7 @@ export function parseProcedure(text: string, fileName: string, vocabulary: Vocab
     circuit,
     wiring,
     cautions,
+    limits,
     steps,
     criteria,
     derating,

@@ -117,9 +117,11 @@ export function readQuantityOrAnyShare(value: unknown, dimension: Dimension): Qu
   return parseQuantityOrAnyShare(quantityText(value, dimension), dimension);
 }
 
-/** A regular expression, for JSON Schema, of what {@link parseQuantityOrShare} takes. */
-export function quantityOrSharePattern(dimension: Dimension): string {
-  const names = referencesTo(dimension);
+/** A regular expression, for JSON Schema, of what {@link parseQuantityOrShare} takes; `names` are what a share may refer to. */
+export function quantityOrSharePattern(
+  dimension: Dimension,
+  names: readonly ReferenceName[] = referencesTo(dimension),
+): string {
   if (names.length === 0) return quantityPattern(dimension);
   return `^${numberPattern} ?(?:${spellingsOf(dimension).join('|')}|% of (?:${names.join('|')}))$`;
 }

@@ -1,8 +1,8 @@
-import { type Ceilings, ceilingsOf } from '../bench/ceilings.js';
+import { type Ceilings, ceilingsOf, ceilingText, type RunLimits } from '../bench/ceilings.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import type { Bench, BenchDrivers } from '../files/bench.js';
 import type { Module } from '../files/module.js';
-import type { CautionName, Procedure, ProcedureStep } from '../files/procedure.js';
+import type { CautionName, Procedure, ProcedureLimits, ProcedureStep } from '../files/procedure.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { QuantityOrShare, Ratio, ReferenceName, Seconds } from '../quantity/quantity.js';
 import { resolve } from '../quantity/resolve-share.js';
@@ -66,13 +66,16 @@ export function makePlan(
 ): Plan {
   const underTest = underTestOf(procedure.circuit, modules);
   const { rated } = underTest;
-  const ceilings = ceilingsOf(bench, drivers);
   const known: Known = { 'rated-voltage': rated.voltage, 'rated-current': rated.current };
+  const ceilings = ceilingsOf(bench, drivers, {
+    ratedVoltage: rated.voltage,
+    procedure: resolvedLimits(procedure.limits, known),
+  });
   const problems: string[] = [...circuitProblems(underTest, bench)];
   if (rated.voltage > ceilings.voltage.value) {
     problems.push(
       `${underTest.name} is rated ${formatQuantity(rated.voltage, 'voltage')} and ` +
-        `${ceilings.voltage.setBy} allows ${formatQuantity(ceilings.voltage.value, 'voltage')}`,
+        `${ceilings.voltage.setBy} allows ${ceilingText(ceilings.voltage, 'voltage')}`,
     );
   }
   const measured = new Set<string>(Object.keys(known));
@@ -101,6 +104,18 @@ export function makePlan(
   const duration = steps.reduce((sum, step) => sum + step.duration, 0);
   const cautions = cautionsFor(procedure, underTest);
   return { procedure, bench, underTest, drivers, ceilings, steps, cautions, duration, known };
+}
+
+/** Shares of the nameplate become what they come to. */
+function resolvedLimits(
+  { voltage, current, ...absolute }: ProcedureLimits,
+  known: Known,
+): RunLimits['procedure'] & object {
+  return {
+    ...absolute,
+    ...(voltage === undefined ? {} : { voltage: resolve(voltage, known) }),
+    ...(current === undefined ? {} : { current: resolve(current, known) }),
+  };
 }
 
 /** What a step rests on is done before it. */
@@ -172,14 +187,14 @@ function beyond(where: string, quantity: QuantityOrShare, known: Known, ceilings
   const wanted = asked(quantity, known);
   if (amps < 0) return [`${where}: ${wanted} is below zero`];
   if (amps > current.value) {
-    const allowed = formatQuantity(current.value, 'current');
+    const allowed = ceilingText(current, 'current');
     return [`${where}: ${wanted} is more than ${current.setBy} allows (${allowed})`];
   }
   const rated = known['rated-voltage'] ?? 0;
   const watts = amps * rated * (1 + aboveNameplate);
   if (watts > power.value) {
     const taken = formatQuantity(watts, 'power', { significant: 4 });
-    const allowed = formatQuantity(power.value, 'power');
+    const allowed = ceilingText(power, 'power');
     return [
       `${where}: ${wanted} at ${formatQuantity(rated, 'voltage')} and ${formatQuantity(aboveNameplate, 'ratio')} ` +
         `is ${taken}, more than ${power.setBy} allows (${allowed})`,

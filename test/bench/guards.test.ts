@@ -137,8 +137,8 @@ describe('what a guard looks at beside the output of the whole', () => {
   it('is the temperature, where the bench limits it', () => {
     const hot = [at('thermometer', 'temperature', 81.26)];
     expect(guarded(hot)).not.toThrow();
-    expect(guarded(hot, { temperature: 81.5 })).not.toThrow();
-    expect(guarded(hot, { temperature: 80 })).toThrow(
+    expect(guarded(hot, { temperature: { value: 81.5, setBy: 'the bench' } })).not.toThrow();
+    expect(guarded(hot, { temperature: { value: 80, setBy: 'the bench' } })).toThrow(
       expect.objectContaining({
         code: 'GUARD_TRIPPED',
         exitCode: 3,

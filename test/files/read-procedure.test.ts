@@ -18,6 +18,7 @@ it('the example of the design is read', () => {
     circuit: 'single',
     wiring: [],
     cautions: ['mains', 'hot-surfaces'],
+    limits: {},
     steps: [
       { kind: 'open-circuit', parameters: { for: 5 }, place: 'real-limit.yaml:6:5' },
       {
@@ -62,6 +63,7 @@ it('what may be left out has its default, and a step may stand without parameter
     circuit: 'single',
     wiring: [],
     cautions: [],
+    limits: {},
     steps: [{ kind: 'open-circuit', parameters: { for: 5 }, place: 'real-limit.yaml:5:5' }],
     criteria: [],
     derating: { margin: 0.8, aboveNameplate: 'never' },

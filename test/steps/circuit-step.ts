@@ -89,7 +89,7 @@ export async function circuitStep(
       step: 1,
       bench,
       limits,
-      guards: new Guards(limits),
+      guards: new Guards(limits, bench.description, place.drivers),
       underTest,
       journal: { append },
       clock,

@@ -67,8 +67,7 @@ export async function stage(change: StageChange = {}): Promise<Stage> {
   const bench = await place.open();
   await bench.load.prepare();
   const known: Known = { 'rated-voltage': 15, 'rated-current': 4, ...change.known };
-  const { temperature } = bench.description.limits;
-  const limits: GuardLimits = { ...bench.ceilings, ratedVoltage: 15, temperature };
+  const limits: GuardLimits = { ...bench.ceilings, ratedVoltage: 15 };
   const tried: Tried = {};
   const shown: Progress[] = [];
   const operator = typeof change.operator === 'function' ? change.operator(place) : change.operator;
@@ -86,7 +85,7 @@ export async function stage(change: StageChange = {}): Promise<Stage> {
         step: 1,
         bench,
         limits,
-        guards: new Guards(limits),
+        guards: new Guards(limits, place.description, place.drivers),
         underTest: { circuit: 'single', modules: [k1], name: 'K1', rated: k1.rated },
         journal: { append },
         clock: place.clock,
