@@ -9,10 +9,11 @@ import { tryDriver, type TrialResult } from '../instrument/trial.js';
 import { visible } from '../instrument/visible.js';
 import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
+import { connectors } from './connectors.js';
 import { errorText } from './error-text.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
-import { connectors, shipped } from './wiring.js';
+import { shipped } from './wiring.js';
 
 /** `--try` and `--connection` go together. */
 export class TrialUsageError extends RailproofError {

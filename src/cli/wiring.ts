@@ -9,9 +9,10 @@ import { type Bench, type BenchDrivers, placeOf, type Post, postsOf, roleOf } fr
 import type { Driver } from '../files/driver.js';
 import { readDriver } from '../files/read-driver.js';
 import type { FileRead } from '../files/read-text.js';
-import { type Connect, connectorFor } from '../instrument/connect.js';
+import type { Connect } from '../instrument/connect.js';
 import { stepKinds } from '../steps/index.js';
 import type { OpenedSimulation } from '../simulation/open-simulation.js';
+import { connectors } from './connectors.js';
 
 /** Everything is wired together here: no other room knows all of these. */
 
@@ -105,19 +106,4 @@ export async function worldOf(bench: Bench, drivers: BenchDrivers): Promise<Worl
           group: bench.group,
         });
   return { connect: connectors(clock, simulation), clock, simulation };
-}
-
-export function connectors(clock: Clock, simulation?: OpenedSimulation): Connect {
-  return connectorFor({
-    tcp: async (address) => (await import('../instrument/tcp-connection.js')).openTcp(address),
-    serial: async (address) => (await import('../instrument/serial-connection.js')).openSerial(address),
-    replay: async (address) =>
-      (await import('../instrument/replay-connection.js')).openReplay(address, clock),
-    ...(simulation === undefined
-      ? {}
-      : {
-          simulated: (address, driver, post) =>
-            Promise.resolve(simulation.connect(post, driver, address.dialect)),
-        }),
-  });
 }

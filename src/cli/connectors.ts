@@ -1,0 +1,19 @@
+import type { Clock } from '../clock/clock.js';
+import { type Connect, connectorFor } from '../instrument/connect.js';
+import type { OpenedSimulation } from '../simulation/open-simulation.js';
+
+/** The ways to connect, each loaded only when it is used. */
+export function connectors(clock: Clock, simulation?: OpenedSimulation): Connect {
+  return connectorFor({
+    tcp: async (address) => (await import('../instrument/tcp-connection.js')).openTcp(address),
+    serial: async (address) => (await import('../instrument/serial-connection.js')).openSerial(address),
+    replay: async (address) =>
+      (await import('../instrument/replay-connection.js')).openReplay(address, clock),
+    ...(simulation === undefined
+      ? {}
+      : {
+          simulated: (address, driver, post) =>
+            Promise.resolve(simulation.connect(post, driver, address.dialect)),
+        }),
+  });
+}
