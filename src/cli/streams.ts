@@ -1,3 +1,5 @@
+import { closeSync, openSync } from 'node:fs';
+import { isatty } from 'node:tty';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 
 /** What a command reads from and writes to; handed in, so that a test can look. */
@@ -31,6 +33,8 @@ const readerLeft: ReadonlySet<string | undefined> = new Set(['EPIPE', 'EIO', 'ER
 export function processStreams(): Streams & { readonly lost: () => Promise<OutputLostError | undefined> } {
   let lost: OutputLostError | undefined;
   process.stderr.on('error', () => undefined);
+  process.stdin.on('error', () => undefined);
+  process.once('exit', letGoOfLostTerminal);
   process.stdout.on('error', (error: NodeJS.ErrnoException) => {
     if (!readerLeft.has(error.code)) lost ??= new OutputLostError(error);
   });
@@ -45,4 +49,17 @@ export function processStreams(): Streams & { readonly lost: () => Promise<Outpu
       return lost;
     },
   };
+}
+
+/**
+ * As it leaves, Node gives a terminal its settings back, and aborts where that terminal is gone: the exit status
+ * would be lost. So whatever still points there is pointed nowhere first.
+ */
+function letGoOfLostTerminal(): void {
+  for (const { fd, isTTY } of [process.stdin, process.stdout, process.stderr]) {
+    if (!isTTY || isatty(fd)) continue;
+    closeSync(fd);
+    // The lowest number that is free is the one that was just closed.
+    openSync('/dev/null', 'r+');
+  }
 }

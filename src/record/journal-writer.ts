@@ -1,10 +1,10 @@
-import { closeSync, fdatasyncSync, ftruncateSync, openSync, writeSync } from 'node:fs';
+import { closeSync, fdatasyncSync, fstatSync, ftruncateSync, openSync, writeSync } from 'node:fs';
 import { dirname } from 'node:path';
 import type { Hash } from 'node:crypto';
 import type { Seconds } from '../quantity/quantity.js';
 import { flushFolder } from './flush-folder.js';
 import { sealedEvents, type JournalEvent, type TimedEvent } from './journal-event.js';
-import { RecordWriteError } from './record-error.js';
+import { RecordGoneError, RecordWriteError } from './record-error.js';
 import { newSealer, sealLine } from './seal.js';
 
 /**
@@ -14,21 +14,29 @@ import { newSealer, sealLine } from './seal.js';
 export class JournalWriter {
   readonly #path: string;
   readonly #file: number;
+  /** Whether this file system tells when a file has lost its last name. */
+  readonly #tellsNames: boolean;
   readonly #now: () => Seconds;
   #began: Seconds;
   readonly #hash: Hash = newSealer();
   /** Of whole lines. */
   #bytes = 0;
-  /** Set when a torn line could not be taken back: what came after it would be joined to it. */
-  #torn: RecordWriteError | undefined;
+  readonly #flush: (file: number) => void;
+  /** Set when nothing that is written later could be relied on. */
+  #failed: RecordWriteError | RecordGoneError | undefined;
 
-  /** @throws RecordWriteError when the file is there already or can't be made. */
-  constructor(path: string, now: () => Seconds) {
+  /**
+   * `flush` brings what was written to the disk.
+   * @throws RecordWriteError when the file is there already or can't be made.
+   */
+  constructor(path: string, now: () => Seconds, flush: (file: number) => void = fdatasyncSync) {
     this.#path = path;
     this.#now = now;
+    this.#flush = flush;
     this.#began = now();
     try {
       this.#file = openSync(path, 'ax');
+      this.#tellsNames = fstatSync(this.#file).nlink > 0;
       flushFolder(dirname(path));
     } catch (cause) {
       throw new RecordWriteError(path, cause);
@@ -37,12 +45,14 @@ export class JournalWriter {
 
   /**
    * When a line can't be written whole, what was written of it is taken back, so that a later one (the end of
-   * the run, where there is room again) stands on a line of its own.
-   * @throws RecordWriteError
+   * the run, where there is room again) stands on a line of its own. Nothing comes after a line that can't be
+   * taken back; nor after a flush that failed: the system may then have dropped what it could not write, and the
+   * next flush would succeed all the same.
+   * @throws RecordWriteError; RecordGoneError when the file was removed since the last sealed event
    */
   append(event: JournalEvent): void {
     const t = Math.round((this.#now() - this.#began) * 1e6) / 1e6;
-    this.#write({ t, ...event }, { flush: sealedEvents.has(event.event) });
+    this.#write({ t, ...event }, { secured: sealedEvents.has(event.event) });
   }
 
   /**
@@ -51,44 +61,55 @@ export class JournalWriter {
    * @throws RecordWriteError
    */
   copy(event: TimedEvent): void {
-    this.#write(event, { flush: false });
+    this.#write(event, { secured: false });
   }
 
   /**
-   * Flushes what was copied to the disk. What is appended from now on happens at `t` and later.
-   * @throws RecordWriteError
+   * Brings what was copied to the disk. What is appended from now on happens at `t` and later.
+   * @throws RecordWriteError, RecordGoneError
    */
   goOnFrom(t: Seconds): void {
-    try {
-      fdatasyncSync(this.#file);
-    } catch (cause) {
-      throw new RecordWriteError(this.#path, cause);
-    }
+    this.#secure();
     this.#began = this.#now() - t;
   }
 
-  #write(event: TimedEvent, { flush }: { readonly flush: boolean }): void {
-    if (this.#torn !== undefined) throw this.#torn;
-    const plain = JSON.stringify(event);
+  #write(event: TimedEvent, { secured }: { readonly secured: boolean }): void {
+    if (this.#failed !== undefined) throw this.#failed;
     const sealed = sealedEvents.has(event.event);
+    const plain = JSON.stringify(event);
     const line = Buffer.from((sealed ? sealLine(this.#hash, plain) : plain) + '\n');
     try {
       writeAll(this.#file, line);
-      if (flush) fdatasyncSync(this.#file);
     } catch (cause) {
       const error = new RecordWriteError(this.#path, cause);
-      this.#takeBack(error);
+      if (!this.#takeBack()) this.#failed = error;
       throw error;
     }
+    if (secured) this.#secure();
     this.#hash.update(line);
     this.#bytes += line.length;
   }
 
-  #takeBack(error: RecordWriteError): void {
+  /** On the disk, and in a file that still has a name there. */
+  #secure(): void {
+    try {
+      this.#flush(this.#file);
+    } catch (cause) {
+      this.#failed = new RecordWriteError(this.#path, cause);
+      this.#takeBack();
+      throw this.#failed;
+    }
+    if (!this.#tellsNames || fstatSync(this.#file).nlink > 0) return;
+    this.#failed = new RecordGoneError(this.#path);
+    throw this.#failed;
+  }
+
+  #takeBack(): boolean {
     try {
       ftruncateSync(this.#file, this.#bytes);
+      return true;
     } catch {
-      this.#torn = error;
+      return false;
     }
   }
 

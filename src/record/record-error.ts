@@ -15,6 +15,20 @@ export class RecordWriteError extends RailproofError {
   }
 }
 
+/** Somebody removed the record while it was being written; what is written on goes nowhere. */
+export class RecordGoneError extends RailproofError {
+  readonly code = 'RECORD_GONE';
+  readonly exitCode = exitCodes.inputOutput;
+  readonly path: string;
+
+  constructor(path: string) {
+    super(`${path} was removed while the run was writing to it: what was read is lost`, {
+      advice: 'keep the folder of the records while a run goes on, and run again',
+    });
+    this.path = path;
+  }
+}
+
 /** There is no record at this place. */
 export class NoRecordError extends RailproofError {
   readonly code = 'NO_RECORD';

@@ -1,8 +1,9 @@
 import { spawnSync } from 'node:child_process';
-import { existsSync, readFileSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { dirname, join } from 'node:path';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { sealedEvents } from '../../src/record/journal-event.js';
+import { type JournalEvent, sealedEvents } from '../../src/record/journal-event.js';
 import { JournalWriter } from '../../src/record/journal-writer.js';
 import { RecordWriteError } from '../../src/record/record-error.js';
 import { anyEvent, opened, readBack, shortRun, temporaryFolder, writeJournal } from './some-run.js';
@@ -120,6 +121,63 @@ describe.skipIf(!canLimit && process.env['CI'] === undefined)('a journal that ru
     writer.close();
     expect(readBack(path).integrity).toMatchObject({ kind: 'whole', lines: written + 1 });
   });
+});
+
+describe('a journal whose disk fails', () => {
+  const brokenOnce = () => {
+    let flushes = 0;
+    return (): void => {
+      flushes += 1;
+      if (flushes === 2) throw Object.assign(new Error('EIO'), { code: 'EIO' });
+    };
+  };
+  const off: JournalEvent = { event: 'input', state: 'off', confirmed: true };
+
+  it('takes nothing more, for the next flush may succeed and mean nothing', () => {
+    const path = fresh();
+    const writer = new JournalWriter(path, () => 0, brokenOnce());
+    writer.append(opened);
+    writer.append({ event: 'notice', text: 'the pumps are running' });
+    const failure = expect.objectContaining({
+      exitCode: 74,
+      message: `${path} can't be written: the disk reports an error`,
+    }) as unknown;
+    for (const event of [off, off, opened, { event: 'notice', text: 'still here' }] as const) {
+      expect(() => {
+        writer.append(event);
+      }).toThrow(failure);
+    }
+    writer.close();
+    expect(readBack(path)).toMatchObject({
+      integrity: { kind: 'cut-off', lines: 2, tornBytes: 0 },
+      events: [{ event: 'opened' }, { event: 'notice' }],
+    });
+  });
+});
+
+it.each([
+  ['the file', (path: string) => path],
+  ['the folder it is in', dirname],
+])('a journal says at the next sealed line that %s was removed', (_, removed) => {
+  const folder = place(`removed-${(made += 1)}`);
+  mkdirSync(folder);
+  const path = join(folder, 'journal.jsonl');
+  const writer = new JournalWriter(path, () => 0);
+  writer.append(opened);
+  rmSync(removed(path), { recursive: true });
+  writer.append({ event: 'notice', text: 'the pumps are running' });
+  for (const event of [opened, { event: 'notice', text: 'still here' }] as const) {
+    expect(() => {
+      writer.append(event);
+    }).toThrow(
+      expect.objectContaining({
+        code: 'RECORD_GONE',
+        exitCode: 74,
+        message: `${path} was removed while the run was writing to it: what was read is lost`,
+      }),
+    );
+  }
+  writer.close();
 });
 
 it('a closed journal takes nothing more', () => {
