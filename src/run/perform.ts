@@ -53,8 +53,9 @@ export interface Performed {
  * is made safe before this returns, and the journal says how it ended.
  */
 export async function perform(performance: Performance): Promise<Performed> {
-  const ending = await attempt({ ...performance, journal: watched(performance) });
+  const attempted = await attempt({ ...performance, journal: watched(performance) });
   const safety = await makeSafe(performance.bench);
+  const ending = unlessBroken(attempted, performance.signal);
   const { journal } = performance;
   try {
     if (safety.kind === 'unconfirmed') {
@@ -101,6 +102,11 @@ async function attempt(performance: Performance): Promise<Ending> {
     // Whoever asked for an end before something else failed gave the first reason, and the first one wins.
     return signal.aborted ? endingOf(signal.reason, signal) : endingOf(error);
   }
+}
+
+/** A run during whose last moments something of ours broke is not completed. */
+function unlessBroken(ending: Ending, { reason }: AbortSignal): Ending {
+  return ending.how === 'completed' && reason instanceof UnforeseenError ? endingOf(reason) : ending;
 }
 
 /** The journal may be what failed, and making safe must not wait for it. */
