@@ -7,6 +7,7 @@ import type {
   PointOutcome,
   ReadingTaken,
   Recovery,
+  Resumed,
   TimedEvent,
 } from '../record/journal-event.js';
 import type { RunHeader } from '../record/run-header.js';
@@ -22,6 +23,10 @@ export interface Evidence {
   readonly readings: number;
   /** The last that was heard of the load's input; undefined when nothing was. */
   readonly input: 'on' | 'off' | undefined;
+  /** The runs that the first steps were taken over from, the first of them first. */
+  readonly resumed: readonly Resumed[];
+  /** How many steps, from the first, a run that goes on would take over. */
+  readonly stepsDone: number;
 }
 
 export interface StepEvidence {
@@ -80,6 +85,8 @@ export class EvidenceCollector {
   #tripped: GuardTripped | undefined;
   #readings = 0;
   #input: 'on' | 'off' | undefined;
+  readonly #resumed: Resumed[] = [];
+  #stepsDone = 0;
 
   constructor(header: RunHeader) {
     this.#header = header;
@@ -129,13 +136,17 @@ export class EvidenceCollector {
       case 'ended':
         this.#ended = event;
         return;
-      case 'opened':
       case 'resumed':
+        this.#resumed.push(event);
+        return;
+      case 'step-ended':
+        if (event.carried !== undefined && event.step === this.#stepsDone + 1) this.#stepsDone += 1;
+        return;
+      case 'opened':
       case 'instrument':
       case 'caution':
       case 'prompt':
       case 'notice':
-      case 'step-ended':
         return;
     }
   }
@@ -148,6 +159,8 @@ export class EvidenceCollector {
       tripped: this.#tripped,
       readings: this.#readings,
       input: this.#input,
+      resumed: this.#resumed,
+      stepsDone: this.#stepsDone,
     };
   }
 

@@ -2,6 +2,7 @@ import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-er
 import type { Result } from '../report/result.js';
 import { understand } from '../report/understand.js';
 import { statusOfOutcome } from './exit-status.js';
+import { resumeHint } from './resume-hint.js';
 import { shown } from './shown.js';
 import type { Streams } from './streams.js';
 
@@ -27,6 +28,7 @@ export function analyseRecord(
   const result = understand(wanted.run);
   if (wanted.strict === true && result.integrity.kind !== 'whole') throw new NotWholeError(result);
   streams.stdout.write(shown(result, wanted.json === true, streams));
+  streams.stderr.write(resumeHint(wanted.run, result));
   const status = result.evidence.ended?.status ?? exitCodes.conforms;
   return isExitCode(status) && status !== exitCodes.conforms ? status : statusOfOutcome(result.outcome);
 }

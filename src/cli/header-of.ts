@@ -1,6 +1,7 @@
 import type { OpenBench } from '../bench/open-bench.js';
 import type { FileRead } from '../files/read-text.js';
 import { headerFormat, type RunHeader } from '../record/run-header.js';
+import type { Plan } from '../run/plan.js';
 import type { LoadedPlan } from './load-plan.js';
 import { packageFacts } from './package-facts.js';
 import { recordedPath } from './wiring.js';
@@ -32,11 +33,7 @@ export function headerOf({ plan, files, baseline }: LoadedPlan, bench: OpenBench
           }),
     },
     procedure: { name: procedure.name, title: procedure.title, cautions: [...plan.cautions] },
-    steps: plan.steps.map(({ kind, summary, parameters }) => ({
-      kind: kind.kind,
-      summary,
-      settings: parameters as Record<string, unknown>,
-    })),
+    steps: stepsOf(plan),
     criteria: procedure.criteria.map(({ finding, requirement }) => ({ finding, requirement })),
     ...(baseline === undefined ? {} : { baseline: baseline.baseline }),
     derating: procedure.derating,
@@ -56,6 +53,15 @@ export function headerOf({ plan, files, baseline }: LoadedPlan, bench: OpenBench
       ...(baseline === undefined ? [] : [fileOf('tolerance', baseline.tolerance)]),
     ],
   };
+}
+
+/** The steps of a plan, as a record has them. */
+export function stepsOf({ steps }: Plan): RunHeader['steps'] {
+  return steps.map(({ kind, summary, parameters }) => ({
+    kind: kind.kind,
+    summary,
+    settings: parameters as Record<string, unknown>,
+  }));
 }
 
 function fileOf(kind: string, { path, sha256, text }: FileRead<unknown>): RunHeader['files'][number] {

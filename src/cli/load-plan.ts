@@ -9,6 +9,7 @@ import type { FileRead } from '../files/read-text.js';
 import { makePlan, type Plan } from '../run/plan.js';
 import { stepKinds } from '../steps/index.js';
 import { defaultTolerance, loadBaseline, type LoadedBaseline, NoBaselineError } from './baseline.js';
+import type { Resumption } from './resume-plan.js';
 import { planDrivers, readBenchDrivers, shipped, type DriverFiles, vocabulary } from './wiring.js';
 
 export interface PlanFiles {
@@ -23,6 +24,8 @@ export interface LoadedPlan {
   readonly files: PlanFiles;
   /** Where it is to be judged against an earlier run. */
   readonly baseline?: LoadedBaseline;
+  /** Where it goes on with a run that was broken off. */
+  readonly resumed?: Resumption;
 }
 
 /**

@@ -1,8 +1,10 @@
+import { resolve } from 'node:path';
 import { sayWhatIsOn } from '../bench/found-on.js';
 import { type OpenBench, openBench } from '../bench/open-bench.js';
 import { JournalWriter } from '../record/journal-writer.js';
 import { journalFormat, type JournalEvent } from '../record/journal-event.js';
 import { writeReadingsCsv } from '../record/readings-csv.js';
+import { copyDoneSteps } from '../record/resume-copy.js';
 import { makeRunFolder, replaceFile, type RunFolder, writeHeader } from '../record/run-folder.js';
 import { jsonText } from '../report/json-text.js';
 import { resultAsJson } from '../report/json.js';
@@ -12,6 +14,9 @@ import { type Performed, perform, type RunWatcher } from '../run/perform.js';
 import type { Operator } from '../steps/operator.js';
 import { headerOf } from './header-of.js';
 import type { LoadedPlan } from './load-plan.js';
+import type { Resumption } from './resume-plan.js';
+import { versionsInWords } from './resume-shown.js';
+import type { Watchman } from './watchman.js';
 import type { World } from './wiring.js';
 
 export interface PlanPerformed extends Performed {
@@ -22,25 +27,42 @@ export interface PlanPerformed extends Performed {
     | { readonly kind: 'error'; readonly error: unknown };
 }
 
+export interface PerformOptions {
+  readonly runs: string;
+  readonly operator: Operator;
+  readonly signal: AbortSignal;
+  /** Aborted by whoever will not wait for an answer: the connections are given up, the load told afresh. */
+  readonly hurry: AbortSignal;
+  readonly watch: RunWatcher;
+}
+
 /**
  * Opens the bench, makes the record, performs the plan and works out what it shows. Until the record's
- * folder and header are written nothing is energised; whatever happens later, the load ends off and what
- * was read is kept.
+ * folder and header are written and the watchman watches nothing is energised; whatever happens later, the
+ * load ends off and what was read is kept.
  * @throws what opening an instrument and making the folder throw; a run that began never throws.
  */
 export async function performPlan(
   loaded: LoadedPlan,
   world: World,
-  options: {
-    readonly runs: string;
-    readonly operator: Operator;
-    readonly signal: AbortSignal;
-    /** Aborted by whoever will not wait for an answer: the connections are given up, the load told afresh. */
-    readonly hurry: AbortSignal;
-    readonly watch: RunWatcher;
-  },
+  options: PerformOptions,
+): Promise<PlanPerformed> {
+  const watchman = world.startWatchman?.();
+  try {
+    return await performWatched(loaded, world, options, watchman);
+  } finally {
+    await watchman?.dismiss();
+  }
+}
+
+async function performWatched(
+  loaded: LoadedPlan,
+  world: World,
+  options: PerformOptions,
+  watchman: Watchman | undefined,
 ): Promise<PlanPerformed> {
   const { plan } = loaded;
+  const from = loaded.resumed?.from;
   const early: JournalEvent[] = [];
   let append = (event: JournalEvent): void => {
     early.push(event);
@@ -52,6 +74,7 @@ export async function performPlan(
     connect: world.connect,
     clock: world.clock,
     onInput: (state, confirmed) => {
+      watchman?.input(state, confirmed);
       append({ event: 'input', state, confirmed });
     },
     onNotice: (text) => {
@@ -68,7 +91,21 @@ export async function performPlan(
       append = (event) => {
         journal.append(event);
       };
-      const performed = await perform({ plan, bench, journal, clock: world.clock, ...options });
+      const { watch } = options;
+      await watchman?.take(
+        { folder: resolve(folder.path), bench: plan.bench, driver: plan.drivers.load },
+        (text) => {
+          watch.noticed(text);
+          append({ event: 'notice', text });
+        },
+      );
+      // Without a watchman it ends before its first step, as a run that is stopped there.
+      const signal =
+        watchman === undefined ? options.signal : AbortSignal.any([options.signal, watchman.missing]);
+      const performed = await perform({
+        ...options,
+        ...{ plan, bench, journal, clock: world.clock, from, signal },
+      });
       return { ...performed, folder, understood: finish(folder) };
     } finally {
       journal.close();
@@ -85,7 +122,7 @@ async function beginRecord(
   bench: OpenBench,
   runs: string,
 ): Promise<{ readonly folder: RunFolder; readonly journal: JournalWriter }> {
-  const { plan } = loaded;
+  const { plan, resumed } = loaded;
   const began = clock.wall();
   try {
     const folder = makeRunFolder(runs, began, plan.underTest.name, plan.procedure.name);
@@ -96,10 +133,17 @@ async function beginRecord(
       const { address, identity } = instrument;
       journal.append({ event: 'instrument', role: post, address, identity });
     }
+    if (resumed !== undefined) goOnWith(resumed, journal);
     return { folder, journal };
   } catch (error) {
     throw await sayWhatIsOn(bench.load.instrument, error);
   }
+}
+
+/** What was done stands in this record too, so that it is whole by itself. */
+function goOnWith({ run }: Resumption, journal: JournalWriter): void {
+  copyDoneSteps(run, journal);
+  for (const text of versionsInWords(run)) journal.append({ event: 'notice', text });
 }
 
 /** What can be made again from the journal must not turn a good run into a failed one. */

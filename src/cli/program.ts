@@ -2,7 +2,7 @@ import { Command, CommanderError, Option } from 'commander';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { errorText } from './error-text.js';
 import { packageFacts } from './package-facts.js';
-import type { RunWanted } from './run.js';
+import type { RunOptions } from './run-wanted.js';
 import type { Streams } from './streams.js';
 
 /**
@@ -43,13 +43,17 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
   const json = (): Option => new Option('--json', 'print one JSON object instead of text');
 
   command(
-    'run <procedure>',
+    'run [procedure]',
     'perform a procedure on a module: a shipped one by its name, or a file',
     'railproof run real-limit --bench fixtures/benches/nursery.yaml --module fixtures/modules/K1.yaml',
   )
-    .requiredOption('--bench <file>', 'the bench: instruments, leads, hard limits')
-    .requiredOption('--module <file...>', 'the module under test; repeated, in the order of the circuit')
-    .option('--runs <folder>', 'where records are kept', 'runs')
+    .option('--bench <file>', 'the bench: instruments, leads, hard limits')
+    .option('--module <file...>', 'the module under test; repeated, in the order of the circuit')
+    .option(
+      '--resume <run>',
+      'go on with a run that was broken off, at its first unfinished step, with the files that its record holds; --bench only where it is at another address now',
+    )
+    .option('--runs <folder>', 'where records are kept; ./runs, or beside the record that is resumed')
     .option('--baseline <run>', 'judge also what changed since this earlier record')
     .option(
       '--tolerance <file>',
@@ -58,9 +62,9 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     .option('--yes', 'acknowledge wiring and cautions beforehand (for unattended benches)')
     .option('--dry-run', 'show what would be done, and touch nothing')
     .addOption(json())
-    .action(async (procedure: string, options: Omit<RunWanted, 'procedure'>) => {
+    .action(async (procedure: string | undefined, options: RunOptions) => {
       const { run } = await import('./run.js');
-      done(await run({ procedure, ...options }, streams));
+      done(await run({ ...options, procedure }, streams));
     });
 
   command(

@@ -1,62 +1,52 @@
+import { join } from 'node:path';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { jsonText } from '../report/json-text.js';
-import type { Plan } from '../run/plan.js';
 import { needsOperator } from '../run/plan-circuit.js';
 import { OperatorAbsentError } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
 import type { Operator } from '../steps/operator.js';
 import { errorText } from './error-text.js';
 import { statusOfOutcome } from './exit-status.js';
-import { loadPlan } from './load-plan.js';
+import { loadPlan, type LoadedPlan } from './load-plan.js';
 import { performPlan, type PlanPerformed } from './perform-plan.js';
 import { planAsJson, planAsText } from './plan-shown.js';
 import { ProgressLine } from './progress-line.js';
+import { resumeHint } from './resume-hint.js';
+import { loadResumed } from './resume-plan.js';
+import { resumptionAsText } from './resume-shown.js';
+import { type RunOptions, runWanted } from './run-wanted.js';
 import { shown } from './shown.js';
 import { simulatedOperator } from './simulated-operator.js';
 import { stopOnSignals, type StopWishes } from './stop-signals.js';
 import type { Streams } from './streams.js';
 import { type World, worldOf } from './wiring.js';
 
-export interface RunWanted {
-  readonly procedure: string;
-  readonly bench: string;
-  readonly module: readonly string[];
-  readonly runs: string;
-  readonly baseline?: string;
-  readonly tolerance?: string;
-  readonly yes?: boolean;
-  readonly dryRun?: boolean;
-  readonly json?: boolean;
-}
-
-/** `railproof run`: performs a procedure and prints what it shows. */
-export async function run(wanted: RunWanted, streams: Streams): Promise<ExitCode> {
-  const loaded = await loadPlan({
-    procedure: wanted.procedure,
-    bench: wanted.bench,
-    modules: wanted.module,
-    baseline: wanted.baseline,
-    tolerance: wanted.tolerance,
-  });
-  if (wanted.dryRun === true) {
-    streams.stdout.write(wanted.json === true ? jsonText(planAsJson(loaded.plan)) : planAsText(loaded.plan));
+/** `railproof run`: performs a procedure, or goes on with one that was broken off, and prints what it shows. */
+export async function run(options: RunOptions, streams: Streams): Promise<ExitCode> {
+  const wanted = runWanted(options);
+  const loaded = wanted.kind === 'afresh' ? await loadPlan(wanted) : await loadResumed(wanted);
+  const { plan, resumed } = loaded;
+  const done = resumed?.from.steps ?? 0;
+  if (resumed !== undefined) streams.stderr.write(resumptionAsText(plan, resumed));
+  if (options.dryRun === true) {
+    streams.stdout.write(options.json === true ? jsonText(planAsJson(plan, done)) : planAsText(plan, done));
     return exitCodes.conforms;
   }
-  const world = await worldOf(loaded.plan.bench, loaded.plan.drivers);
+  const world = await worldOf(plan.bench, plan.drivers);
   const stop = stopOnSignals(streams);
-  const operator = operatorFor(world, wanted.yes === true, streams, stop);
-  const watch = new ProgressLine(streams.stderr, loaded.plan, world.clock);
+  const operator = operatorFor(world, options.yes === true, streams, stop);
+  const watch = new ProgressLine(streams.stderr, plan, world.clock);
   try {
-    requireOperator(loaded.plan, operator, wanted.yes === true);
+    requireOperator(loaded, operator, options.yes === true);
     const performed = await performPlan(loaded, world, {
-      runs: wanted.runs,
+      runs: options.runs ?? (resumed === undefined ? 'runs' : join(resumed.run.folder.path, '..')),
       operator,
       signal: stop.signal,
       hurry: stop.hurry,
       watch,
     });
     watch.clear();
-    return tell(performed, wanted.json === true, streams);
+    return tell(performed, options.json === true, streams);
   } finally {
     stop.release();
   }
@@ -69,6 +59,7 @@ function tell(performed: PlanPerformed, json: boolean, streams: Streams): ExitCo
   streams.stderr.write(`record: ${folder.path}\n`);
   if (ending.how !== 'completed') streams.stderr.write(`${errorText(ending.error)}\n`);
   if (understood.kind === 'error') streams.stderr.write(`${errorText(understood.error)}\n`);
+  if (understood.kind === 'result') streams.stderr.write(resumeHint(folder.path, understood.result));
   if (safety.kind === 'unconfirmed') {
     streams.stderr.write(
       `\nIt could not be confirmed that the load is off: ${safety.why}\n${safety.advice}\n`,
@@ -94,12 +85,14 @@ function operatorFor(world: World, yes: boolean, streams: Streams, stop: StopWis
 }
 
 /** A procedure that needs a person does not begin without one. @throws OperatorAbsentError */
-function requireOperator(plan: Plan, operator: Operator, yes: boolean): void {
+function requireOperator({ plan, resumed }: LoadedPlan, operator: Operator, yes: boolean): void {
   if (operator.present) return;
+  const done = resumed?.from.steps ?? 0;
   const needing = plan.steps.flatMap((step, index) =>
-    needsOperator(step, plan.bench) ? [`step ${index + 1} (${step.kind.kind})`] : [],
+    index >= done && needsOperator(step, plan.bench) ? [`step ${index + 1} (${step.kind.kind})`] : [],
   );
-  if (!yes && plan.procedure.wiring.length > 0) needing.push('its wiring');
+  const wiring = [...plan.procedure.wiring, ...(resumed?.from.standing ?? [])];
+  if (!yes && wiring.length > 0) needing.push('its wiring');
   if (!yes && plan.cautions.length > 0) needing.push('its cautions');
   if (needing.length > 0) throw new OperatorAbsentError(needing);
 }

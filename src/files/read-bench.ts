@@ -17,7 +17,8 @@ export function readBench(path: string): Promise<FileRead<Bench>> {
   return readAndParse(path, (text, fileName) => besideBench(parseBench(text, fileName), dirname(path)));
 }
 
-function besideBench(bench: Bench, folder: string): Bench {
+/** The same bench, its replayed dialogues looked for in that folder. */
+export function besideBench(bench: Bench, folder: string): Bench {
   const instruments = Object.entries(bench.instruments).map(([role, place]) => [
     role,
     inFolder(place, folder),

@@ -1,6 +1,7 @@
 import type { Finding } from '../analysis/finding.js';
 import { toJsonUnit, ucumCode } from '../quantity/ucum.js';
 import { endedHow, type Result } from './result.js';
+import { takenOver } from './taken-over.js';
 
 /** The name and version of the format; the number changes when a reader would have to. */
 export const resultFormat = 'railproof/run 1';
@@ -18,10 +19,12 @@ export function resultAsJson(result: Result): object {
     ...circuitAsJson(result),
     procedure: result.header.procedure.name,
     ...baselineAsJson(result),
+    ...takenOverAsJson(result),
     ended: how === 'failed' ? 'stopped' : how,
     reason,
     outcome: result.outcome,
     integrity: result.integrity,
+    ...watchmanAsJson(result),
     readings: result.evidence.readings,
     findings: result.findings.map(findingAsJson),
     decisions: result.decisions.map(({ finding, requirement, outcome, probability, note }) => ({
@@ -44,6 +47,22 @@ function baselineAsJson({ header: { baseline } }: Result): object {
   if (baseline === undefined) return {};
   const { run, modules, tolerance } = baseline;
   return { baseline: { run, modules, tolerance: tolerance.name } };
+}
+
+/** Only where there was one. */
+function takenOverAsJson({ evidence }: Result): object {
+  const parts = takenOver(evidence);
+  if (parts.length === 0) return {};
+  return {
+    takenOver: parts.map(({ run, began, first, last }) => ({ run, began, firstStep: first, lastStep: last })),
+  };
+}
+
+/** Only where it had to act. */
+function watchmanAsJson({ watchman }: Result): object {
+  if (watchman === undefined) return {};
+  const { noticed, why, address, attempts, outcome, reason, took } = watchman;
+  return { watchman: { noticed, why, address, attempts, outcome, reason, took } };
 }
 
 function findingAsJson(finding: Finding): object {

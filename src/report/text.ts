@@ -2,12 +2,15 @@ import { findingNamed } from '../analysis/finding.js';
 import { ratedOf } from '../analysis/rated.js';
 import type { Decision } from '../judgement/judge.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
+import type { WatchmanReport } from '../record/watchman-report.js';
 import { alignTable } from './align.js';
 import { answer } from './answer.js';
 import { columnsOf } from './finding-text.js';
 import { printableData } from './printable.js';
 import { endedHow, type Result } from './result.js';
 import type { Style } from './style.js';
+import { takenOver, type TakenOverPart } from './taken-over.js';
+import { watchmanText } from './watchman-text.js';
 
 /** The report for a terminal or a text file: the answer first, then what it rests on. */
 export function resultAsText(recorded: Result, style: Style): string {
@@ -26,25 +29,42 @@ export function resultAsText(recorded: Result, style: Style): string {
     .concat('\n');
 }
 
-/** Of the evidence, only the way it ended is shown; its points may be many and are left alone. */
+/** Of the evidence, only the way it ended and what it was resumed from are shown; its points may be many and are left alone. */
 function withPrintableTexts({ evidence, header, ...rest }: Result): Result {
   return {
     ...printableData(rest),
     header: printableData({ ...header, steps: [], files: [] }),
-    evidence: { ...evidence, ended: printableData(evidence.ended) },
+    evidence: {
+      ...evidence,
+      ended: printableData(evidence.ended),
+      resumed: printableData(evidence.resumed),
+    },
   };
 }
 
-function heading({ header, run }: Result, style: Style): string {
-  const began = header.began.replace('T', ' ').replace(/:\d\d(\.\d+)?Z$/, ' UTC');
+function heading({ header, run, evidence }: Result, style: Style): string {
+  const began = inMinutes(header.began);
   const names = header.modules.map(({ name }) => name).join('+');
   return [
     style.strong(`${names}: ${header.procedure.title}`),
     ...circuitInWords(header),
     ...header.modules.map((module) => plate(module, header.circuit === 'single')),
     `${header.procedure.name} on ${header.bench.name}${header.bench.simulated ? ' (simulated)' : ''}, ${began}, record ${run}`,
+    ...takenOverInWords(takenOver(evidence)),
     ...againstWhat(header),
   ].join('\n');
+}
+
+/** What was measured on another day. */
+function takenOverInWords(parts: readonly TakenOverPart[]): readonly string[] {
+  return parts.map(({ first, last, run, began }) => {
+    const steps = first === last ? `step ${first}` : `steps ${first} to ${last}`;
+    return `${steps} taken over from ${run}, ${inMinutes(began)}`;
+  });
+}
+
+function inMinutes(began: string): string {
+  return began.replace('T', ' ').replace(/:\d\d(\.\d+)?Z$/, ' UTC');
 }
 
 /** Of several modules: how they are wired, and what their labels amount to together. */
@@ -84,7 +104,8 @@ function warnings(result: Result, style: Style): string[] {
   }
   if (how === 'cut-off' && integrity.kind !== 'damaged')
     lines.push('CUT OFF: the record ends without an end; what follows is what is whole.');
-  if (how === 'cut-off' && result.evidence.input === 'on')
+  if (how === 'cut-off' && result.watchman !== undefined) lines.push(...watchmanInWords(result.watchman));
+  else if (how === 'cut-off' && result.evidence.input === 'on')
     lines.push('THE LOAD WAS ON when the record broke off: `railproof safe --bench <file>` switches it off.');
   const { baseline, modules } = result.header;
   const names = modules.map(({ name }) => name).join(', ');
@@ -95,6 +116,14 @@ function warnings(result: Result, style: Style): string[] {
   if (how === 'stopped') lines.push(`STOPPED: ${reason ?? ''}`);
   if (how === 'failed') lines.push(`FAILED: ${reason ?? ''}`);
   return lines.map((line) => style.warn(line));
+}
+
+/** What became of the program, and of the load. */
+function watchmanInWords(report: WatchmanReport): string[] {
+  const text = `WATCHMAN: ${watchmanText(report)}.`;
+  return report.outcome === 'off'
+    ? [text]
+    : [text, 'THE LOAD MAY BE ON: `railproof safe --bench <file>` switches it off.'];
 }
 
 function answerAsText(result: Result, style: Style): string {
