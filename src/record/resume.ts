@@ -1,5 +1,5 @@
 import type { Seconds } from '../quantity/quantity.js';
-import type { Carried, Ended, Resumed, StepEnded, TimedEvent } from './journal-event.js';
+import type { Carried, Ended, Resumed, StepBegan, StepEnded, TimedEvent } from './journal-event.js';
 import { checkJournal, type Integrity, readJournal } from './journal-reader.js';
 import { BadRecordError } from './record-error.js';
 import { NotResumableError } from './resume-error.js';
@@ -85,30 +85,18 @@ class DoneSteps {
 
   add(event: TimedEvent): void {
     this.#latest = Math.max(this.#latest, event.t);
-    switch (event.event) {
-      case 'opened':
-        this.begunWith = event.header;
-        return;
-      case 'resumed':
-        this.resumed.push(event);
-        return;
-      case 'step-began':
-        this.#asked = undefined;
-        if (event.kind !== this.#header.steps[event.step - 1]?.kind)
-          throw this.#odd(`step ${event.step} of the journal is none that run.json planned`);
-        return;
-      case 'prompt':
-        this.#asked = event.text;
-        return;
-      case 'step-ended':
-        this.#end(event);
-        return;
-      case 'ended':
-        this.ended = event;
-        return;
-      default:
-        return;
-    }
+    if (event.event === 'opened') this.begunWith = event.header;
+    if (event.event === 'resumed') this.resumed.push(event);
+    if (event.event === 'step-began') this.#begin(event);
+    if (event.event === 'prompt') this.#asked = event.text;
+    if (event.event === 'step-ended') this.#end(event);
+    if (event.event === 'ended') this.ended = event;
+  }
+
+  #begin({ step, kind }: StepBegan): void {
+    this.#asked = undefined;
+    if (kind !== this.#header.steps[step - 1]?.kind)
+      throw this.#odd(`step ${step} of the journal is none that run.json planned`);
   }
 
   #end({ step, carried }: StepEnded): void {
