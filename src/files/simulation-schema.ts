@@ -111,6 +111,8 @@ const simulatedInstrument = camelKeys(
 const faultNames = [
   'load-silent',
   'meter-silent',
+  'load-stuck',
+  'meter-stuck',
   'load-lost',
   'meter-lost',
   'scanner-silent',

@@ -65,6 +65,8 @@ export interface SimulatedError {
 
 export type FaultName =
   | `${'load' | 'meter' | 'scanner' | 'thermometer'}-${'silent' | 'lost'}`
+  /** Answers each question for a reading with what it last answered to it, whatever is there. */
+  | `${'load' | 'meter'}-stuck`
   | 'module-dead'
   /** The load's and the meter's leads, swapped at the module. */
   | 'reversed'

@@ -1,8 +1,8 @@
-import { GuardTrippedError } from '../bench/bench-error.js';
 import { Guards } from '../bench/guards.js';
 import { makeSafe, type Safety } from '../bench/make-safe.js';
 import type { OpenBench } from '../bench/open-bench.js';
 import { checkInputIsOff, checkMeters, checkOpenCircuitVoltage } from '../bench/pre-flight.js';
+import { type Trip, tripOf } from '../bench/trip.js';
 import type { Clock } from '../clock/clock.js';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
@@ -97,8 +97,10 @@ async function attempt(performance: Performance): Promise<Ending> {
     await goThrough(performance);
     return { how: 'completed' };
   } catch (error) {
-    if (error instanceof GuardTrippedError) noteTrip(performance, error);
     const { signal } = performance;
+    const trip = tripOf(error);
+    // Whoever will not wait for an answer has the connections closed: that is no silence of an instrument.
+    if (trip !== undefined && !(signal.aborted && trip.guard === 'silence')) noteTrip(performance, trip);
     // Whoever asked for an end before something else failed gave the first reason, and the first one wins.
     return signal.aborted ? endingOf(signal.reason, signal) : endingOf(error);
   }
@@ -110,9 +112,9 @@ function unlessBroken(ending: Ending, { reason }: AbortSignal): Ending {
 }
 
 /** The journal may be what failed, and making safe must not wait for it. */
-function noteTrip({ journal }: Performance, trip: GuardTrippedError): void {
+function noteTrip({ journal }: Performance, trip: Trip): void {
   try {
-    journal.append({ event: 'guard-tripped', guard: trip.guard, text: trip.message });
+    journal.append({ event: 'guard-tripped', ...trip });
   } catch {
     // `ended` will meet the same disk and report it.
   }

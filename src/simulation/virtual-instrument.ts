@@ -29,6 +29,10 @@ export class VirtualInstrument {
   readonly dialect: string;
   readonly lostFrom: Seconds;
   readonly #silentFrom: Seconds;
+  /** When it begins to repeat its last readings. */
+  readonly #stuckFrom: Seconds;
+  /** The last reading of each quantity, for one that is stuck. */
+  readonly #last = new Map<string, number>();
   readonly #bench: VirtualBench;
   readonly #probes: Probes;
   readonly #replyEnd: string;
@@ -50,6 +54,7 @@ export class VirtualInstrument {
     this.dialect = dialect.name;
     this.lostFrom = fault(`${role}-lost`);
     this.#silentFrom = fault(`${role}-silent`);
+    this.#stuckFrom = role === 'load' || role === 'meter' ? fault(`${role}-stuck`) : Number.POSITIVE_INFINITY;
     this.#panelAt = fault('meter-wrong-mode');
     this.#bench = bench;
     this.#probes = probes;
@@ -91,7 +96,7 @@ export class VirtualInstrument {
           set: (change) => {
             this.#bench.setLoad(change, this.#free);
           },
-          measure: (what) => this.#taking((at) => this.#readings.read(what, at)),
+          measure: (what) => this.#taking(what, (at) => this.#readings.read(what, at)),
         });
       case 'meter':
         return dialect.wake({
@@ -101,7 +106,7 @@ export class VirtualInstrument {
             this.#mode = mode;
           },
           measure: (what) =>
-            this.#taking((at) =>
+            this.#taking(what, (at) =>
               what === 'voltage' ? this.#readings.read(what, at) : this.#readings.ohms(at),
             ),
         });
@@ -121,7 +126,7 @@ export class VirtualInstrument {
       case 'thermometer':
         return dialect.wake({
           identity,
-          measure: () => this.#taking((at) => this.#readings.temperature(at)),
+          measure: () => this.#taking('temperature', (at) => this.#readings.temperature(at)),
         });
     }
   }
@@ -131,11 +136,14 @@ export class VirtualInstrument {
     this.#probes.close(this.#relays.closed);
   }
 
-  /** A reading takes its time. */
-  #taking(read: (at: Seconds) => number): number {
+  /** A reading takes its time, be it an old one. */
+  #taking(what: string, read: (at: Seconds) => number): number {
     const from = this.#free;
     this.#free = from + this.#readings.time;
-    return read(from);
+    const old = from >= this.#stuckFrom ? this.#last.get(what) : undefined;
+    const value = old ?? read(from);
+    this.#last.set(what, value);
+    return value;
   }
 }
 
