@@ -13,6 +13,7 @@ import type { Connect } from '../instrument/connect.js';
 import { stepKinds } from '../steps/index.js';
 import type { OpenedSimulation } from '../simulation/open-simulation.js';
 import { connectors } from './connectors.js';
+import { Watchman } from './watchman.js';
 
 /** Everything is wired together here: no other room knows all of these. */
 
@@ -85,6 +86,8 @@ export interface World {
   readonly clock: Clock;
   /** Where the bench is simulated. */
   readonly simulation: OpenedSimulation | undefined;
+  /** Starts whoever switches the load off should this program vanish; not where the load goes with it. */
+  readonly startWatchman?: () => Watchman;
 }
 
 /**
@@ -105,5 +108,11 @@ export async function worldOf(bench: Bench, drivers: BenchDrivers): Promise<Worl
           drivers,
           group: bench.group,
         });
-  return { connect: connectors(clock, simulation), clock, simulation };
+  const { kind } = bench.instruments.load.connection;
+  return {
+    connect: connectors(clock, simulation),
+    clock,
+    simulation,
+    ...(kind === 'tcp' || kind === 'serial' ? { startWatchman: () => new Watchman() } : {}),
+  };
 }

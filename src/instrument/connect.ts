@@ -1,11 +1,20 @@
 import type { ConnectionAddress } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
 import { formatAddress } from '../files/connection-address.js';
+import type { Seconds } from '../quantity/quantity.js';
 import { InstrumentUnreachableError } from './connection-errors.js';
 import type { Connection } from './connection.js';
 
-/** Opens what a bench file names; the driver and the role are for connections that must know who is meant. */
-export type Connect = (address: ConnectionAddress, driver: Driver, role: string) => Promise<Connection>;
+/**
+ * Opens what a bench file names; the driver and the role are for connections that must know who is meant.
+ * `within` is how long the other side may take, where that is not as usual.
+ */
+export type Connect = (
+  address: ConnectionAddress,
+  driver: Driver,
+  role: string,
+  within?: Seconds,
+) => Promise<Connection>;
 
 type Kind = ConnectionAddress['kind'];
 
@@ -15,6 +24,7 @@ export type Connectors = {
     address: Extract<ConnectionAddress, { kind: Which }>,
     driver: Driver,
     role: string,
+    within?: Seconds,
   ) => Promise<Connection>;
 };
 
@@ -24,7 +34,7 @@ export type Connectors = {
  * @throws InstrumentUnreachableError when there is no way for a kind
  */
 export function connectorFor(connectors: Connectors): Connect {
-  return async (address, driver, role) => {
+  return async (address, driver, role, within) => {
     const connect = connectors[address.kind] as Connect | undefined;
     if (connect === undefined) {
       throw new InstrumentUnreachableError({
@@ -33,6 +43,6 @@ export function connectorFor(connectors: Connectors): Connect {
         advice: `Use one of these: ${Object.keys(connectors).join(', ')}.`,
       });
     }
-    return connect(address, driver, role);
+    return connect(address, driver, role, within);
   };
 }

@@ -25,6 +25,8 @@ export interface DialogueParts {
 const blockPatience = 60;
 const stepPatience = 10;
 const attempts = 4;
+/** So often the identity may be asked for and nothing at all come back. */
+const mostSilent = 2;
 const mostLateReplies = 256;
 
 /**
@@ -170,11 +172,14 @@ export class Dialogue {
     this.#inStep = false;
     const giveUp = this.#clock.now() + stepPatience * this.#wire.timeout;
     let quietRounds = 0;
-    for (let attempt = 0; attempt < attempts && this.#clock.now() < giveUp; attempt++) {
+    let silentRounds = 0;
+    for (let attempt = 0; attempt < attempts && silentRounds < mostSilent; attempt++) {
+      if (this.#clock.now() >= giveUp) break;
       await this.#clearLine();
       await this.#send(this.#identify);
       const heard = await this.#identityRound(giveUp);
       quietRounds = heard === 'then-quiet' ? quietRounds + 1 : 0;
+      if (heard === 'nothing') silentRounds += 1;
       if ((heard === 'all' || quietRounds === 2) && (await this.#clearLine())) {
         this.#notice({ kind: 'in-step-again' });
         return;

@@ -1,84 +1,79 @@
 import type { Clock } from '../clock/clock.js';
-import type { Driver, DriverReading, Role } from '../files/driver.js';
-import type { Connection } from './connection.js';
-import { Dialogue } from './dialogue.js';
-import type { Trace } from './dialogue-record.js';
-import { readErrorQueue } from './error-queue.js';
-import { isIdentityFor } from './identity.js';
-import { InstrumentComplainedError, NotInDriverError, WrongInstrumentError } from './instrument-errors.js';
-import { noticeText, type Notice, type OnNotice } from './notice.js';
-import { fillMessage, type OperationValues } from './message.js';
-import { tellMakeSafe } from './make-safe.js';
-import { readChannel, readFlag, readNumber, type About } from './reading.js';
-import type { ScpiError } from './scpi-error.js';
+import type { RailproofError } from '../errors/railproof-error.js';
+import type { Driver, Role } from '../files/driver.js';
+import type { Seconds } from '../quantity/quantity.js';
+import { ConnectionLostError } from './connection-errors.js';
+import { type Again, gapText, isGap, throughGap, type WayBack } from './gap.js';
+import type { OperationValues } from './message.js';
 import type { Measurement } from './scpi-number.js';
+import { Session, type SessionParts } from './session.js';
+import { Settings } from './settings.js';
 import { Turns } from './turns.js';
 
-export interface InstrumentParts {
-  readonly role: Role;
-  readonly driver: Driver;
-  readonly connection: Connection;
-  readonly clock: Clock;
-  /** For the journal: late replies, bytes nobody asked for, errors from before. */
-  readonly onNotice?: OnNotice;
-  readonly trace?: Trace;
-  /**
-   * `make-safe` tells what makes it safe before anything is asked, so that no silence and no complaint comes
-   * before it. How it complains is then no reason not to open it.
-   */
-  readonly first?: 'identity' | 'make-safe';
+export interface InstrumentParts extends Omit<SessionParts, 'identity'> {
+  /** Without one a lost connection is lost for good, and no question is asked twice. */
+  readonly wayBack?: WayBack;
 }
 
-/** One instrument of the bench, spoken to as its driver says. One act at a time; others wait their turn. */
+/**
+ * What is done first of all once an instrument answers again: looking how it was left, telling it what it may
+ * have forgotten. What was found is put in words for a notice.
+ */
+export type LookFirst = (session: Session, tellAgain: () => Promise<void>) => Promise<string>;
+
+/** What failed, and since when it has. */
+interface Gap {
+  readonly failure: RailproofError;
+  readonly began: Seconds;
+  readonly way: WayBack;
+}
+
+/**
+ * One instrument of the bench, spoken to as its driver says. One act at a time; others wait their turn.
+ *
+ * With a way back, an act that fails by the line or by a reply is done again, on a new connection if need be;
+ * every act does the same when it is done twice. Unless told to look otherwise, an instrument that answers
+ * again is first told its settings again: it may have lost its power in between.
+ */
 export class Instrument {
   readonly role: Role;
   readonly driver: Driver;
   /** What it answered to the question who it is. */
   readonly identity: string;
-  readonly #dialogue: Dialogue;
+  readonly #parts: InstrumentParts;
+  readonly #clock: Clock;
+  readonly #way: WayBack | undefined;
   readonly #turns = new Turns();
+  readonly #settings = new Settings();
+  #session: Session;
+  #lookFirst: LookFirst = async (_, tellAgain) => {
+    await tellAgain();
+    return '';
+  };
+  /** Closed, or sought in vain: what fails now fails at once. */
+  #over = false;
 
-  private constructor(role: Role, driver: Driver, identity: string, dialogue: Dialogue) {
-    this.role = role;
-    this.driver = driver;
-    this.identity = identity;
-    this.#dialogue = dialogue;
+  private constructor(parts: InstrumentParts, session: Session) {
+    this.role = parts.role;
+    this.driver = parts.driver;
+    this.identity = session.identity;
+    this.#parts = parts;
+    this.#clock = parts.clock;
+    this.#session = session;
+    const { wayBack } = parts;
+    this.#way = wayBack && { ...wayBack, isWanted: () => !this.#over && wayBack.isWanted() };
   }
 
   /**
-   * Finds out who is there, empties the error queue of what is in it from before, and sends the driver's
-   * `prepare`. Nothing is switched on. When it fails the connection is closed.
-   * @throws WrongInstrumentError when what answers is not what the driver is for
-   * @throws InstrumentComplainedError when the error queue does not get clear, or `prepare` is refused
-   * @throws InstrumentSilentError, ReplyNotUnderstoodError, ConnectionLostError and the rest of the dialogue's
+   * Opens it as `Session.open` does; when that fails the connection is closed, and nothing is tried again.
+   * @throws as `Session.open`
    */
   static async open(parts: InstrumentParts): Promise<Instrument> {
-    const { role, driver, connection, clock, onNotice, trace, first = 'identity' } = parts;
-    const dialogue = new Dialogue({
-      connection,
-      wire: driver.wire,
-      clock,
-      identify: driver.identify,
-      isIdentity: isIdentityFor(driver),
-      ...(onNotice && { onNotice }),
-      ...(trace && { trace }),
-    });
-    try {
-      if (first === 'make-safe') await tellMakeSafe(dialogue, driver);
-      const identity = await identityOf(dialogue, driver, role);
-      const instrument = new Instrument(role, driver, identity, dialogue);
-      const prepared = instrument.#prepare(onNotice);
-      // Whether it is safe is read from it later, whatever it says of how it was prepared.
-      await (first === 'make-safe' ? prepared.catch(() => undefined) : prepared);
-      return instrument;
-    } catch (error) {
-      await dialogue.close();
-      throw error;
-    }
+    return new Instrument(parts, await Session.open(parts));
   }
 
   get address(): string {
-    return this.#dialogue.address;
+    return this.#session.address;
   }
 
   /** Whether the driver says how to do it. */
@@ -91,111 +86,106 @@ export class Instrument {
     return Object.hasOwn(this.driver.readings, reading);
   }
 
-  /**
-   * Sends the messages of an operation, all of them, then reads the error queue where there is one.
-   * @throws InstrumentComplainedError with what the queue holds
-   * @throws NotInDriverError; RangeError when a value that the messages need is missing
-   */
+  lookFirst(look: LookFirst): void {
+    this.#lookFirst = look;
+  }
+
+  /** @throws as `Session.perform` */
   perform(operation: string, values: OperationValues = {}): Promise<void> {
-    return this.#turns.take(() => {
-      const messages = this.has(operation) ? this.driver.operations[operation] : undefined;
-      if (messages === undefined) {
-        throw new NotInDriverError({ driver: this.driver.name, what: `operation "${operation}"` });
-      }
-      return this.#send(messages.map((message) => fillMessage(message, values)));
+    return this.#act(async (session) => {
+      await session.perform(operation, values);
+      this.#settings.note(operation, values);
     });
   }
 
-  /**
-   * A number, in the unit of its dimension.
-   * @throws ReplyNotUnderstoodError, InstrumentSilentError, NotInDriverError and the rest of the dialogue's
-   */
+  /** @throws as `Session.read` */
   read(reading: string): Promise<Measurement> {
-    return this.#turns.take(() => this.#reply(this.#wanted(reading, 'number'), readNumber));
+    return this.#act((session) => session.read(reading));
   }
 
-  /**
-   * A yes or no.
-   * @throws as `read`; also when the reply says neither
-   */
+  /** @throws as `Session.flag` */
   flag(reading: string): Promise<boolean> {
-    return this.#turns.take(() => this.#reply(this.#wanted(reading, 'flag'), readFlag));
+    return this.#act((session) => session.flag(reading));
   }
 
-  /**
-   * A scanner's closed channel; null where none is.
-   * @throws as `read`
-   */
+  /** @throws as `Session.channel` */
   channel(reading: string): Promise<number | null> {
-    return this.#turns.take(() => this.#reply(this.#wanted(reading, 'channel'), readChannel));
+    return this.#act((session) => session.channel(reading));
   }
 
   /** Hands the instrument back to its front panel, as the driver says. */
   release(): Promise<void> {
-    return this.#turns.take(() => this.#send(this.driver.release));
+    return this.#turns.take(() => this.#session.release());
   }
 
-  /** Never rejects. */
+  /** Never rejects; a question under way ends with ConnectionLostError. */
   close(): Promise<void> {
-    return this.#dialogue.close();
+    this.#over = true;
+    return this.#session.close();
   }
 
-  async #prepare(onNotice: OnNotice | undefined): Promise<void> {
-    const stale = await readErrorQueue(this.#dialogue, this.driver.errors);
-    for (const entry of stale.entries) {
-      const notice: Notice = { kind: 'stale-error', entry };
-      onNotice?.(noticeText(this.address, notice), notice);
-    }
-    if (!stale.clear) throw this.#complaint(stale.entries, []);
-    await this.#send(this.driver.prepare);
+  #act<Result>(act: (session: Session) => Promise<Result>): Promise<Result> {
+    return this.#turns.take(async () => {
+      const began = this.#clock.now();
+      try {
+        return await act(this.#session);
+      } catch (failure) {
+        const way = this.#way;
+        if (way?.isWanted() !== true || !isGap(failure)) throw failure;
+        way.onGap();
+        return await this.#throughGap(act, { failure, began, way });
+      }
+    });
   }
 
-  async #send(messages: readonly string[]): Promise<void> {
-    for (const message of messages) await this.#dialogue.tell(message);
-    if (messages.length === 0) return;
-    const { entries } = await readErrorQueue(this.#dialogue, this.driver.errors);
-    if (entries.length > 0) throw this.#complaint(entries, messages);
-  }
-
-  async #reply<Reading extends DriverReading, Result>(
-    reading: Reading,
-    understand: (reply: string, reading: Reading, about: About) => Result,
-  ): Promise<Result> {
-    const question = reading.ask.at(-1) ?? '';
-    for (const message of reading.ask.slice(0, -1)) await this.#dialogue.tell(message);
-    const reply = await this.#dialogue.ask(question);
+  async #throughGap<Result>(act: (session: Session) => Promise<Result>, gap: Gap): Promise<Result> {
     try {
-      return understand(reply, reading, { address: this.address, question });
+      return await throughGap(gap.failure, { clock: this.#clock, way: gap.way }, (how, within) =>
+        this.#again(act, gap, how, within),
+      );
     } catch (error) {
-      this.#dialogue.doubt();
+      this.#over = true;
       throw error;
     }
   }
 
-  #wanted<Kind extends DriverReading['kind']>(
-    name: string,
-    kind: Kind,
-  ): Extract<DriverReading, { kind: Kind }> {
-    const reading = this.reads(name) ? this.driver.readings[name] : undefined;
-    if (reading?.kind !== kind) {
-      throw new NotInDriverError({ driver: this.driver.name, what: `${kind} reading "${name}"` });
+  async #again<Result>(
+    act: (session: Session) => Promise<Result>,
+    { failure, began, way }: Gap,
+    how: Again,
+    within: Seconds,
+  ): Promise<Result> {
+    const tell = (found: string): void => {
+      way.onNotice(gapText(failure, how, this.#clock.now() - began, found));
+    };
+    if (how === 'open') await this.#reopen(way, within);
+    const session = this.#session;
+    const found = await this.#lookFirst(session, () => this.#tellAgain(session)).catch((error: unknown) => {
+      if (!isGap(error)) tell('');
+      throw error;
+    });
+    const result = await act(session);
+    tell(found);
+    return result;
+  }
+
+  /** The same instrument must answer as before. */
+  async #reopen(way: WayBack, within: Seconds): Promise<void> {
+    await this.#session.close();
+    const connection = await way.connect(within);
+    if (!way.isWanted()) {
+      await connection.close();
+      throw new ConnectionLostError({ address: connection.address, reason: 'it was closed here' });
     }
-    return reading as Extract<DriverReading, { kind: Kind }>;
+    this.#session = await Session.open({
+      ...this.#parts,
+      connection,
+      first: 'identity',
+      identity: this.identity,
+    });
   }
 
-  #complaint(entries: readonly ScpiError[], after: readonly string[]): InstrumentComplainedError {
-    return new InstrumentComplainedError({ address: this.address, entries, after });
+  async #tellAgain(session: Session): Promise<void> {
+    for (const { operation, values } of this.#settings.inOrder()) await session.perform(operation, values);
   }
-}
-
-async function identityOf(dialogue: Dialogue, driver: Driver, role: Role): Promise<string> {
-  const isIdentity = isIdentityFor(driver);
-  let identity = await dialogue.ask(driver.identify);
-  if (!isIdentity(identity)) {
-    // It may be the late answer to something that an earlier program asked.
-    dialogue.doubt();
-    identity = await dialogue.ask(driver.identify).catch(() => identity);
-  }
-  if (isIdentity(identity)) return identity.trim();
-  throw new WrongInstrumentError({ address: dialogue.address, role, driver: driver.name, identity });
 }

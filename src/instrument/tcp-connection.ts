@@ -21,7 +21,7 @@ export interface TcpPatience {
  */
 export function openTcp(
   address: TcpAddress,
-  patience: TcpPatience = { connecting: 5, writing: 5 },
+  { connecting = 5, writing = 5 }: Partial<TcpPatience> = {},
 ): Promise<Connection> {
   const name = formatAddress(address);
   return new Promise((resolve, reject) => {
@@ -35,13 +35,13 @@ export function openTcp(
       fail(whyNot(error, address.host), error);
     };
     const timer = setTimeout(() => {
-      fail(`no connection within ${patience.connecting} s`);
-    }, patience.connecting * 1000);
+      fail(`no connection within ${Number(connecting.toFixed(1))} s`);
+    }, connecting * 1000);
     socket.once('error', refused);
     socket.once('connect', () => {
       clearTimeout(timer);
       socket.off('error', refused);
-      resolve(new PortConnection({ address: name, writing: patience.writing, ...portOf(socket) }));
+      resolve(new PortConnection({ address: name, writing, ...portOf(socket) }));
     });
   });
 }
