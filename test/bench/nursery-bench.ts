@@ -1,4 +1,5 @@
 import { fileURLToPath } from 'node:url';
+import type { Ceilings } from '../../src/bench/ceilings.js';
 import type { InputListener } from '../../src/bench/load.js';
 import { type OpenBench, openBench } from '../../src/bench/open-bench.js';
 import { VirtualClock } from '../../src/clock/virtual-clock.js';
@@ -39,7 +40,8 @@ export interface Nursery {
   readonly simulation: OpenedSimulation;
   /** Every line to an instrument that was opened, oldest first. */
   readonly lines: readonly Connection[];
-  readonly open: () => Promise<OpenBench>;
+  /** With the ceilings of a run; else with what the bench allows. */
+  readonly open: (ceilings?: Ceilings) => Promise<OpenBench>;
 }
 
 /** The bench of a shipped file and shipped drivers; its instruments are reached by bytes, in virtual time. */
@@ -72,8 +74,9 @@ export async function nursery(change: NurseryChange = {}): Promise<Nursery> {
     clock,
     simulation: opened,
     lines,
-    open: () =>
+    open: (ceilings) =>
       openBench({
+        ...(ceilings === undefined ? {} : { ceilings }),
         bench: description,
         drivers,
         clock,

@@ -17,7 +17,7 @@ import { type Nursery, nursery, type NurseryChange } from '../bench/nursery-benc
 import { k1 } from '../steps/one-step.js';
 
 /** A procedure with these steps, a line each as a file writes them. */
-export function procedureOf(steps: readonly string[], cautions = '[]', wiring = '[]') {
+export function procedureOf(steps: readonly string[], cautions = '[]', wiring = '[]', limits = '{}') {
   const text = [
     'railproof: procedure 1',
     'name: rehearsal',
@@ -28,6 +28,7 @@ export function procedureOf(steps: readonly string[], cautions = '[]', wiring = 
     ...steps.map((step) => `  - ${step}`),
     'derating: { margin: 80 %, above-nameplate: never }',
     `wiring: ${wiring}`,
+    `limits: ${limits}`,
     '',
   ].join('\n');
   return parseProcedure(text, 'rehearsal.yaml', vocabulary);
@@ -37,6 +38,8 @@ export interface RehearsalChange extends NurseryChange {
   readonly steps: readonly string[];
   readonly cautions?: string;
   readonly wiring?: string;
+  /** The procedure's own, as its file writes them; those of the bench are `limits`. */
+  readonly asksFor?: string;
   readonly operator?: (bench: Nursery) => Operator;
   readonly signal?: AbortSignal;
   /** Told of each event before it is journalled; what it throws is as if the journal had failed. */
@@ -89,7 +92,7 @@ export async function rehearse(change: RehearsalChange): Promise<Rehearsal> {
   });
   const module = { ...k1, rated: change.rated ?? k1.rated };
   const plan = makePlan(
-    procedureOf(change.steps, change.cautions, change.wiring),
+    procedureOf(change.steps, change.cautions, change.wiring, change.asksFor),
     [module],
     place.description,
     place.drivers,
@@ -97,7 +100,7 @@ export async function rehearse(change: RehearsalChange): Promise<Rehearsal> {
   );
   const journal = new JournalWriter(path, () => place.clock.now());
   append({ event: 'opened', format: journalFormat, wallClock: place.clock.wall().toISOString(), header: '' });
-  const bench = await place.open();
+  const bench = await place.open(plan.ceilings);
   const watched: string[] = [];
   const noticed: string[] = [];
   const performed = await perform({
