@@ -37,7 +37,7 @@ export async function checkAgainstLoad(
   throw new WrongPlaceError(
     'probes-elsewhere',
     `the meter reads ${read('meter')} where the load has ${read('load')} at its terminals, which is never more than the module gives`,
-    "a lead of the meter is off, its probes are not at the module, or the scanner's relay is stuck and it does not say so",
+    "a lead of the meter is off, its probes are not at the module, the scanner's relay is stuck and it does not say so, or the load repeats an old reading",
   );
 }
 

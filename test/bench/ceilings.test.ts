@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { ceilingsOf } from '../../src/bench/ceilings.js';
+import { ceilingsOf, ceilingText } from '../../src/bench/ceilings.js';
 import { groupBench } from './group-bench.js';
 import { nursery } from './nursery-bench.js';
 
@@ -49,5 +49,29 @@ describe('what may never be exceeded on a bench', () => {
   it('is laid to the bench where both say the same', async () => {
     const { description, drivers } = await nursery({ limits: { power: 200 } });
     expect(ceilingsOf(description, drivers).power).toEqual({ value: 200, setBy: 'the bench' });
+  });
+
+  it('is what the procedure allows where that is less, each quantity by itself', async () => {
+    const { description, drivers } = await nursery({ limits: { temperature: 90 } });
+    const procedure = { voltage: 16, current: 9, power: 80, temperature: 75 };
+    expect(ceilingsOf(description, drivers, { ratedVoltage: 15, procedure })).toEqual({
+      voltage: { value: 16, setBy: 'the procedure' },
+      current: { value: 8, setBy: 'the bench' },
+      power: { value: 80, setBy: 'the procedure' },
+      temperature: { value: 75, setBy: 'the procedure' },
+    });
+  });
+
+  it('is the nameplate and a quarter more, where nobody allows less', async () => {
+    const { description, drivers } = await nursery({ limits: { temperature: 90 } });
+    const ceilings = ceilingsOf(description, drivers, { ratedVoltage: 15, procedure: { temperature: 95 } });
+    expect(ceilings.voltage).toEqual({ value: 18.75, setBy: 'the nameplate' });
+    expect(ceilings.temperature).toEqual({ value: 90, setBy: 'the bench' });
+    expect(ceilingsOf(description, drivers, { ratedVoltage: 48 }).voltage.value).toBe(60);
+  });
+
+  it('is written without the digits that reckoning makes', () => {
+    expect(ceilingText({ value: 1.1 * 12, setBy: 'the procedure' }, 'voltage')).toBe('13.2 V');
+    expect(ceilingText({ value: 8, setBy: 'the bench' }, 'current')).toBe('8 A');
   });
 });

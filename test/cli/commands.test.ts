@@ -31,7 +31,7 @@ describe('run', () => {
     expect(status).toBe(0);
     expect(stdout).toMatch(/2 {2}load-ramp +21 points from 0 A to 100 % of rated-current/);
     expect(stdout).toContain('cautions to acknowledge: mains, hot-surfaces, earth-link-removed');
-    expect(stdout).toContain('never above 8 A (the bench), 60 V (the bench), 150 W (the bench)');
+    expect(stdout).toContain('never above 8 A (the bench), 18.75 V (the nameplate), 150 W (the bench)');
     expect(() => readdirSync(runs)).toThrow('ENOENT');
   });
 

@@ -264,3 +264,37 @@ it('a procedure without steps, or with too many, is refused', () => {
     'real-limit.yaml:4:8: steps: found 201 of them; at most 200 are allowed',
   ]);
 });
+
+describe('the limits of a procedure', () => {
+  const limited = (limits: string) => changed('cautions:', `limits: ${limits}\ncautions:`);
+
+  it('are quantities or shares of the nameplate, each of them optional', () => {
+    expect(
+      parse(limited('{ voltage: 110 % of rated-voltage, current: 5 A, temperature: 75 °C }')).limits,
+    ).toEqual({
+      voltage: { kind: 'share', ratio: 1.1, of: 'rated-voltage' },
+      current: { kind: 'absolute', value: 5 },
+      temperature: 75,
+    });
+    expect(parse(limited('{ power: 80 W }')).limits).toEqual({ power: 80 });
+  });
+
+  it.each([
+    [
+      '{ voltage: 110 % of open-circuit-voltage }',
+      "real-limit.yaml:4:20: limits.voltage: 'open-circuit-voltage' is known only once it has been measured; a share here refers to rated-voltage",
+    ],
+    [
+      '{ current: 110 % of rated-voltage }',
+      "real-limit.yaml:4:20: limits.current: 'rated-voltage' is a voltage; a share that gives a current refers to rated-current or dropout-current",
+    ],
+    ['{ current: 0 A }', "real-limit.yaml:4:20: limits.current: found '0 A'; more than 0 A is needed"],
+    [
+      '{ power: 80 }',
+      'real-limit.yaml:4:18: limits.power: found the bare number 80; a power needs its unit: 60 W, 500 mW',
+    ],
+    ['{ curent: 5 A }', "real-limit.yaml:4:11: limits: unknown key 'curent'; did you mean 'current'?"],
+  ])('are refused with their place: %s', (limits, problem) => {
+    expect(problemsOf(() => parse(limited(limits)))).toEqual([problem]);
+  });
+});

@@ -36,6 +36,23 @@ describe('a plan', () => {
     });
   });
 
+  it('never goes beyond the limits of its procedure, and says whose they are', async () => {
+    const limits = '{ voltage: 110 % of rated-voltage, current: 110 % of rated-current, power: 70 W }';
+    const { description, drivers } = await nursery();
+    const planned = (to: string): Plan =>
+      makePlan(
+        procedureOf([`load-ramp: { to: ${to} }`], '[]', '[]', limits),
+        [k1],
+        description,
+        drivers,
+        stepKinds,
+      );
+    const { ceilings } = planned('110 % of rated-current');
+    expect(ceilings.voltage).toEqual({ value: 16.5, setBy: 'the procedure' });
+    expect(ceilings.current).toEqual({ value: 1.1 * 4, setBy: 'the procedure' });
+    expect(() => planned('4.5 A')).toThrow('load-ramp.to: 4.5 A is more than the procedure allows (4.4 A)');
+  });
+
   it('may refer to what a step before has measured, whose size is not known yet', async () => {
     await expect(
       planOf(['dropout-search: { ceiling: 8 A }', 'load-ramp: { to: 300 % of dropout-current }']),
