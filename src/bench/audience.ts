@@ -26,6 +26,11 @@ export class Audience {
     });
   };
 
+  /** Whether what they throw counts: not while the bench is made safe or closed. */
+  get isHeeded(): boolean {
+    return this.#mayStop;
+  }
+
   /** Does something that is not stopped by what the audience throws meanwhile. */
   async regardless<T>(work: () => Promise<T>): Promise<T> {
     this.#mayStop = false;

@@ -70,6 +70,27 @@ export class LoadSwitchedOffError extends RailproofError {
   }
 }
 
+/**
+ * The load was on when it was last heard of, and is off now that it answers again. Nobody knows why, so nobody
+ * here switches it on again.
+ */
+export class LoadWentOffError extends RailproofError {
+  readonly code = 'LOAD_WENT_OFF';
+  readonly exitCode = exitCodes.stopped;
+  readonly address: string;
+
+  constructor(address: string) {
+    super(
+      `the input of the load at ${address} was on when it was last heard of, and is off now that it answers again`,
+      {
+        advice:
+          'it lost its power, protects itself, or someone switched it off at its panel: look there first; it is not switched on again by itself',
+      },
+    );
+    this.address = address;
+  }
+}
+
 /** The load does not do what it was told. */
 export class DisobeyedError extends RailproofError {
   readonly code = 'DISOBEYED';

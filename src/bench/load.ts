@@ -1,8 +1,9 @@
 import type { Instrument } from '../instrument/instrument.js';
+import type { Session } from '../instrument/session.js';
 import type { Measurement } from '../instrument/scpi-number.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Volts, Watts } from '../quantity/quantity.js';
-import { BeyondCeilingError, DisobeyedError } from './bench-error.js';
+import { BeyondCeilingError, DisobeyedError, LoadWentOffError } from './bench-error.js';
 import { type Ceilings, ceilingText, overCurrentFactor } from './ceilings.js';
 
 export type InputState = 'on' | 'off';
@@ -13,16 +14,22 @@ export type InputState = 'on' | 'off';
  */
 export type InputListener = (state: InputState, confirmed: boolean) => void;
 
-/** An electronic load that keeps the bench's ceilings and reads its input's state back. */
+/**
+ * An electronic load that keeps the bench's ceilings and reads its input's state back. When it answers again
+ * after a gap, that state is read before anything else, and held against what it was.
+ */
 export class Load {
   readonly instrument: Instrument;
   readonly #ceilings: Ceilings;
   readonly #onInput: InputListener;
+  /** As last read back; nothing is expected of one that was never read, or is just being switched. */
+  #input: InputState | 'going-on' | 'unknown' = 'unknown';
 
   constructor(instrument: Instrument, ceilings: Ceilings, onInput: InputListener) {
     this.instrument = instrument;
     this.#ceilings = ceilings;
     this.#onInput = onInput;
+    instrument.lookFirst((session, tellAgain) => this.#lookFirst(session, tellAgain));
   }
 
   /** Constant-current mode at 0 A, the load's own protections set where it has them. The input is not touched. */
@@ -85,6 +92,7 @@ export class Load {
   async inputOn(): Promise<void> {
     // Told beforehand: whatever becomes of us in between, no record shall lack it.
     this.#onInput('on', false);
+    this.#input = 'going-on';
     await this.instrument.perform('input-on');
     const confirmed = await this.isOn();
     this.#onInput(confirmed ? 'on' : 'off', true);
@@ -94,6 +102,7 @@ export class Load {
 
   /** @throws DisobeyedError when the load says that its input is still on. */
   async inputOff(): Promise<void> {
+    this.#input = 'unknown';
     await this.instrument.perform('input-off');
     const confirmed = !(await this.isOn());
     this.#onInput('off', confirmed);
@@ -107,6 +116,7 @@ export class Load {
    * @throws DisobeyedError when the load says that its input is still on.
    */
   async makeSafe(): Promise<void> {
+    this.#input = 'unknown';
     // What its input says decides, whatever it said, or did not say, of how it was told.
     const complaint: unknown = await this.instrument.perform('make-safe').then(
       () => undefined,
@@ -134,8 +144,10 @@ export class Load {
     return Math.min(this.#ceilings.power.value * overCurrentFactor, rated);
   }
 
-  isOn(): Promise<boolean> {
-    return this.instrument.flag('input-state');
+  async isOn(): Promise<boolean> {
+    const on = await this.instrument.flag('input-state');
+    this.#input = stateOf(on);
+    return on;
   }
 
   readVoltage(): Promise<Measurement> {
@@ -149,4 +161,26 @@ export class Load {
   get address(): string {
     return this.instrument.address;
   }
+
+  /**
+   * One that is on keeps what it was told. One that is off may have lost its power, and with it all that it was
+   * told; so it is told again, and its input left as it is.
+   * @throws LoadWentOffError, DisobeyedError when it is not as it was
+   */
+  async #lookFirst(session: Session, tellAgain: () => Promise<void>): Promise<string> {
+    const before = this.#input;
+    const now = stateOf(await session.flag('input-state'));
+    this.#onInput(now, true);
+    if (before === 'on' && now === 'off') throw new LoadWentOffError(this.address);
+    if (before === 'off' && now === 'on') {
+      throw new DisobeyedError(this.address, 'was off and is on now that it answers again');
+    }
+    if (now === 'off') await tellAgain();
+    if (now === 'off' && before === 'going-on') this.#onInput('on', false);
+    return `its input is ${before === now ? 'still ' : ''}${now}`;
+  }
+}
+
+function stateOf(on: boolean): InputState {
+  return on ? 'on' : 'off';
 }

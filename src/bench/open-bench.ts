@@ -11,6 +11,7 @@ import { type InputListener, Load } from './load.js';
 import { checkAgainstLoad } from './meter-against-load.js';
 import { MeterPlaces } from './meter-places.js';
 import type { SampleWanted, Taken } from './sample.js';
+import { WaysBack } from './ways-back.js';
 
 export interface BenchParts {
   readonly bench: Bench;
@@ -49,8 +50,10 @@ export interface OpenBench {
    * told before anything is asked. Hands over a load that answers.
    */
   reopenLoad(pause: Seconds): Promise<Load>;
-  /** How often a connection was lost, or an answer stayed away, and was found again: what is measured across it is no measurement. */
+  /** How often a connection was lost, or an answer did not come as it should: what is measured across that is no measurement. */
   readonly gaps: number;
+  /** What was the matter the last time, in words. */
+  readonly latestGap: string | undefined;
   /**
    * Gives up whatever is under way with any instrument, for whoever can't wait: all connections are closed, and
    * a question without an answer ends. The load can be opened afresh. Never rejects.
@@ -77,14 +80,17 @@ export async function openBench(wanted: BenchParts): Promise<OpenBench> {
   const connections = new Connections(wanted.connect);
   const parts = { ...wanted, connect: connections.connect };
   const audience = new Audience(parts.onInput, parts.onNotice);
-  const load = await openInstrument(parts, audience, 'load', parts.first);
+  const ways = new WaysBack({ connect: parts.connect, signal: parts.signal, audience });
+  // For a load that is only made safe there is no way back but that.
+  const wayTo = parts.first === 'make-safe' ? undefined : ways;
+  const load = await openInstrument(parts, audience, 'load', parts.first, wayTo);
   const others: BenchInstrument[] = [];
   try {
     for (const [post] of postsOf(parts.bench)) {
       if (post === 'load' || driverAt(parts.drivers, post) === undefined) continue;
-      others.push({ post, instrument: await openInstrument(parts, audience, post) });
+      others.push({ post, instrument: await openInstrument(parts, audience, post, 'identity', wayTo) });
     }
-    return assemble(parts, audience, connections, load, others);
+    return assemble(parts, audience, connections, ways, load, others);
   } catch (error) {
     const told = await sayWhatIsOn(load, error);
     for (const { instrument } of others) await instrument.close();
@@ -97,6 +103,7 @@ function assemble(
   parts: BenchParts,
   audience: Audience,
   connections: Connections,
+  ways: WaysBack,
   first: Instrument,
   others: readonly BenchInstrument[],
 ): OpenBench {
@@ -118,9 +125,12 @@ function assemble(
     ...others,
   ];
   const lookAgain = async (): Promise<readonly Taken[]> => {
+    const { gaps } = ways;
     const seen: Taken[] = [];
     await places.read([], (one) => seen.push(one));
-    return [...seen, { of: 'load', what: 'voltage', measurement: await load.readVoltage() }];
+    const atLoad: Taken = { of: 'load', what: 'voltage', measurement: await load.readVoltage() };
+    // Across a gap the two do not belong together, and contradict nothing.
+    return ways.gaps === gaps ? [...seen, atLoad] : [];
   };
   const regardless = <T>(work: () => Promise<T>): Promise<T> => audience.regardless(work);
   return {
@@ -136,6 +146,7 @@ function assemble(
       return instruments();
     },
     async sample(each, { taps = [], temperature = false, compared = true } = {}) {
+      const { gaps } = ways;
       const taken: Taken[] = [];
       const take = (one: Taken): void => {
         each(one);
@@ -147,7 +158,7 @@ function assemble(
       }
       take({ of: 'load', what: 'voltage', measurement: await load.readVoltage() });
       take({ of: 'load', what: 'current', measurement: await load.readCurrent() });
-      if (compared) await checkAgainstLoad(parts.bench, taken, lookAgain);
+      if (compared && ways.gaps === gaps) await checkAgainstLoad(parts.bench, taken, lookAgain);
       return taken;
     },
     async reopenLoad(pause) {
@@ -156,8 +167,16 @@ function assemble(
       load = new Load(await openInstrument(parts, audience, 'load', 'make-safe'), ceilings, audience.input);
       return load;
     },
-    gaps: 0,
-    cut: () => connections.giveUp(),
+    get gaps() {
+      return ways.gaps;
+    },
+    get latestGap() {
+      return ways.latest;
+    },
+    cut: () => {
+      ways.giveUp();
+      return connections.giveUp();
+    },
     regardless,
     close: () =>
       regardless(async () => {
@@ -175,11 +194,21 @@ async function openInstrument(
   { notice }: Audience,
   post: Post,
   first: InstrumentParts['first'] = 'identity',
+  ways?: WaysBack,
 ): Promise<Instrument> {
   const place = postsOf(bench).find(([one]) => one === post)?.[1];
   const driver = driverAt(drivers, post);
   if (place === undefined || driver === undefined) throw new Error(`the bench has no ${post}`);
   const connection = await connect(place.connection, driver, post);
+  const wayBack = ways?.to(place.connection, driver, post);
   // When this fails it has closed the connection.
-  return Instrument.open({ role: roleOf(post), driver, connection, clock, onNotice: notice, first });
+  return Instrument.open({
+    role: roleOf(post),
+    driver,
+    connection,
+    clock,
+    onNotice: notice,
+    first,
+    ...(wayBack && { wayBack }),
+  });
 }
