@@ -1,4 +1,5 @@
 import { formatAddress } from '../files/connection-address.js';
+import type { Seconds } from '../quantity/quantity.js';
 import { type BenchParts, type OpenBench, openBench } from './open-bench.js';
 
 export type Safety =
@@ -29,12 +30,14 @@ export function makeSafe(bench: OpenBench): Promise<Safety> {
 /**
  * The same for a bench that is not open, of which nothing is known: on each connection the load is told what
  * makes it safe before anything is asked of it. The meter is left alone: it may not answer. Never rejects.
+ * It is tried once after each pause, for as long as there are any.
  */
 export async function makeSafeUnopened(
   parts: Pick<BenchParts, 'bench' | 'drivers' | 'connect' | 'clock'>,
+  patience: Iterable<Seconds> = pauses,
 ): Promise<{ readonly safety: Safety; readonly address: string }> {
   let address = formatAddress(parts.bench.instruments.load.connection);
-  const attempts = pauses.map((pause) => async (): Promise<void> => {
+  const attempt = (pause: Seconds) => async (): Promise<void> => {
     await parts.clock.sleep(pause);
     const bench = await openBench({
       ...parts,
@@ -49,13 +52,16 @@ export async function makeSafeUnopened(
     } finally {
       await bench.close();
     }
-  });
-  const safety = await untilConfirmed(attempts);
+  };
+  const attempts = function* (): Generator<() => Promise<void>> {
+    for (const pause of patience) yield attempt(pause);
+  };
+  const safety = await untilConfirmed(attempts());
   return { safety, address };
 }
 
 /** The reason given is that of the last attempt. */
-async function untilConfirmed(attempts: readonly (() => Promise<void>)[]): Promise<Safety> {
+async function untilConfirmed(attempts: Iterable<() => Promise<void>>): Promise<Safety> {
   let why = '';
   for (const attempt of attempts) {
     try {

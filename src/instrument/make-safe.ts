@@ -9,3 +9,13 @@ import type { Dialogue } from './dialogue.js';
 export async function tellMakeSafe(dialogue: Dialogue, driver: Driver): Promise<void> {
   for (const message of driver.operations['make-safe'] ?? []) await dialogue.tell(message);
 }
+
+/**
+ * The same over a line of which nothing is known. An empty message goes first: whoever spoke before may have
+ * died in the middle of one, and what is joined to half of another is neither.
+ * @throws ConnectionLostError
+ */
+export async function tellMakeSafeAfresh(dialogue: Dialogue, driver: Driver): Promise<void> {
+  await dialogue.tell('');
+  await tellMakeSafe(dialogue, driver);
+}

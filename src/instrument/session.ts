@@ -6,7 +6,7 @@ import type { Trace } from './dialogue-record.js';
 import { readErrorQueue } from './error-queue.js';
 import { isIdentityFor } from './identity.js';
 import { InstrumentComplainedError, NotInDriverError, WrongInstrumentError } from './instrument-errors.js';
-import { tellMakeSafe } from './make-safe.js';
+import { tellMakeSafeAfresh } from './make-safe.js';
 import { fillMessage, type OperationValues } from './message.js';
 import { noticeText, type Notice, type OnNotice } from './notice.js';
 import { readChannel, readFlag, readNumber, type About } from './reading.js';
@@ -65,7 +65,7 @@ export class Session {
       ...(trace && { trace }),
     });
     try {
-      if (first === 'make-safe') await tellMakeSafe(dialogue, driver);
+      if (first === 'make-safe') await tellMakeSafeAfresh(dialogue, driver);
       const identity = await identityOf(dialogue, driver, role, isIdentity);
       const session = new Session(driver, identity, dialogue);
       const prepared = session.#prepare(onNotice);

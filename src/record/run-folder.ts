@@ -24,6 +24,8 @@ export interface RunFolder {
   readonly journal: string;
   readonly readings: string;
   readonly findings: string;
+  /** There only where the watchman had to act. */
+  readonly watchman: string;
 }
 
 export function runFolderAt(path: string): RunFolder {
@@ -33,6 +35,7 @@ export function runFolderAt(path: string): RunFolder {
     journal: join(path, 'journal.jsonl'),
     readings: join(path, 'readings.csv'),
     findings: join(path, 'findings.json'),
+    watchman: join(path, 'watchman.json'),
   };
 }
 

@@ -3,6 +3,7 @@ import type { Finding } from '../analysis/finding.js';
 import type { Decision, Outcome } from '../judgement/judge.js';
 import type { Integrity } from '../record/journal-reader.js';
 import type { RunHeader } from '../record/run-header.js';
+import type { WatchmanReport } from '../record/watchman-report.js';
 
 /** A record understood: everything that a report of it can say. */
 export interface Result {
@@ -13,6 +14,8 @@ export interface Result {
   readonly findings: readonly Finding[];
   readonly decisions: readonly Decision[];
   readonly outcome: Outcome | 'not-judged';
+  /** Where the program vanished or hung. */
+  readonly watchman?: WatchmanReport;
 }
 
 export type EndedHow = 'completed' | 'stopped' | 'failed' | 'cut-off';

@@ -2,6 +2,7 @@ import { analyse } from '../analysis/analyse.js';
 import { type Evidence, EvidenceCollector } from '../analysis/evidence.js';
 import { type Decision, judge, overall } from '../judgement/judge.js';
 import { checkJournal, type Integrity, readJournal } from '../record/journal-reader.js';
+import { readWatchmanReport } from '../record/read-watchman-report.js';
 import { runFolderAt } from '../record/run-folder.js';
 import { readHeader } from '../record/run-header.js';
 import type { Result } from './result.js';
@@ -24,6 +25,7 @@ export function understand(path: string): Result {
   const evidence = collector.result();
   const findings = analyse(evidence);
   const decisions = judge(header, findings);
+  const watchman = readWatchmanReport(folder);
   return {
     run: folder.name,
     header,
@@ -32,6 +34,7 @@ export function understand(path: string): Result {
     findings,
     decisions,
     outcome: outcomeOf(integrity, evidence, decisions),
+    ...(watchman === undefined ? {} : { watchman }),
   };
 }
 
