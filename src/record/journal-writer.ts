@@ -5,6 +5,7 @@ import type { Seconds } from '../quantity/quantity.js';
 import { flushFolder } from './flush-folder.js';
 import { sealedEvents, type JournalEvent, type TimedEvent } from './journal-event.js';
 import { RecordGoneError, RecordWriteError } from './record-error.js';
+import { Reserve } from './reserve.js';
 import { newSealer, sealLine } from './seal.js';
 
 /**
@@ -22,6 +23,7 @@ export class JournalWriter {
   /** Of whole lines. */
   #bytes = 0;
   readonly #flush: (file: number) => void;
+  readonly #reserve: Reserve;
   /** Set when nothing that is written later could be relied on. */
   #failed: RecordWriteError | RecordGoneError | undefined;
 
@@ -37,6 +39,7 @@ export class JournalWriter {
     try {
       this.#file = openSync(path, 'ax');
       this.#tellsNames = fstatSync(this.#file).nlink > 0;
+      this.#reserve = new Reserve(`${path}.reserve`);
       flushFolder(dirname(path));
     } catch (cause) {
       throw new RecordWriteError(path, cause);
@@ -44,10 +47,10 @@ export class JournalWriter {
   }
 
   /**
-   * When a line can't be written whole, what was written of it is taken back, so that a later one (the end of
-   * the run, where there is room again) stands on a line of its own. Nothing comes after a line that can't be
-   * taken back; nor after a flush that failed: the system may then have dropped what it could not write, and the
-   * next flush would succeed all the same.
+   * When a line can't be written whole, what was written of it is taken back and the reserve given up, so that
+   * later ones (the end of the run) have room and stand on lines of their own. Nothing comes after a line that
+   * can't be taken back; nor after a flush that failed: the system may then have dropped what it could not write,
+   * and the next flush would succeed all the same.
    * @throws RecordWriteError; RecordGoneError when the file was removed since the last sealed event
    */
   append(event: JournalEvent): void {
@@ -83,6 +86,7 @@ export class JournalWriter {
     } catch (cause) {
       const error = new RecordWriteError(this.#path, cause);
       if (!this.#takeBack()) this.#failed = error;
+      this.#reserve.giveUp();
       throw error;
     }
     if (secured) this.#secure();
@@ -114,6 +118,7 @@ export class JournalWriter {
   }
 
   close(): void {
+    this.#reserve.giveUp();
     closeSync(this.#file);
   }
 }
