@@ -26,13 +26,12 @@ export interface WatchmanProcess {
  * may be what ends us.
  */
 export function startWatchmanProcess(entry: string = watchmanEntry): WatchmanProcess {
-  const { NODE_OPTIONS: _, ...environment } = process.env;
   // Where a machine has no room for it, it comes without streams.
   const child: ChildProcess = spawn(process.execPath, [entry, String(process.pid)], {
     detached: true,
     stdio: ['pipe', 'pipe', 'inherit'],
     windowsHide: true,
-    env: environment,
+    env: { ...process.env, NODE_OPTIONS: undefined },
   });
   child.stdin?.on('error', () => undefined);
   const ended = endOf(child);
