@@ -5,6 +5,7 @@ import { JournalWriter } from '../record/journal-writer.js';
 import { journalFormat, type JournalEvent } from '../record/journal-event.js';
 import { writeReadingsCsv } from '../record/readings-csv.js';
 import { copyDoneSteps } from '../record/resume-copy.js';
+import { RecordWriteError } from '../record/record-error.js';
 import { makeRunFolder, replaceFile, type RunFolder, writeHeader } from '../record/run-folder.js';
 import { jsonText } from '../report/json-text.js';
 import { resultAsJson } from '../report/json.js';
@@ -23,7 +24,12 @@ export interface PlanPerformed extends Performed {
   readonly folder: RunFolder;
   /** What the record shows; or why it can't be told, which must not hide how the bench was left. */
   readonly understood:
-    | { readonly kind: 'result'; readonly result: Result }
+    | {
+        readonly kind: 'result';
+        readonly result: Result;
+        /** Why readings.csv and findings.json are not both there, where they are not. */
+        readonly unkept: RecordWriteError | undefined;
+      }
     | { readonly kind: 'error'; readonly error: unknown };
 }
 
@@ -150,18 +156,20 @@ function goOnWith({ run }: Resumption, journal: JournalWriter): void {
 function finish(folder: RunFolder): PlanPerformed['understood'] {
   try {
     const result = understand(folder.path);
-    keepResult(folder, result);
-    return { kind: 'result', result };
+    return { kind: 'result', result, unkept: keepResult(folder, result) };
   } catch (error) {
     return { kind: 'error', error };
   }
 }
 
-function keepResult(folder: RunFolder, result: Result): void {
+/** The journal is whole without them, so that they can't be written is told and fails nothing. */
+function keepResult(folder: RunFolder, result: Result): RecordWriteError | undefined {
   try {
     writeReadingsCsv(folder);
     replaceFile(folder.findings, jsonText(resultAsJson(result)));
-  } catch {
-    // The journal is whole; `railproof analyse` shows the same, and says where it can't write.
+    return undefined;
+  } catch (error) {
+    if (error instanceof RecordWriteError) return error;
+    throw error;
   }
 }
