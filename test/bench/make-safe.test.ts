@@ -100,10 +100,10 @@ describe('on a line that is new a load is told to be safe before it is asked any
     const bench = await openBench({ ...parts, ...unheard });
     for (const question of ['*IDN?', 'SYST:ERR?', 'INP?']) answers[question] = undefined;
     expect(await makeSafe(bench)).toMatchObject({ kind: 'unconfirmed' });
-    expect(lines.map(({ sent }) => sent.slice(0, 2))).toEqual([
-      ['*IDN?', 'SYST:ERR?'],
-      ['INP OFF', '*IDN?'],
-      ['INP OFF', '*IDN?'],
+    expect(lines.map(({ sent }) => sent.slice(0, 3))).toEqual([
+      ['*IDN?', 'SYST:ERR?', '*CLS'],
+      ['', 'INP OFF', '*IDN?'],
+      ['', 'INP OFF', '*IDN?'],
     ]);
     expect(toy.state.input).toBe('0');
   });
@@ -112,7 +112,7 @@ describe('on a line that is new a load is told to be safe before it is asked any
     const { parts, toy, lines } = await listening({});
     expect(await makeSafeUnopened(parts)).toEqual({ safety: { kind: 'confirmed' }, address: 'virtual:' });
     expect(toy.state.input).toBe('0');
-    expect(lines.map(({ sent }) => sent[0])).toEqual(['INP OFF']);
+    expect(lines.map(({ sent }) => sent.slice(0, 2))).toEqual([['', 'INP OFF']]);
   });
 
   it('twice when there was none and it does not answer', async () => {
@@ -123,8 +123,8 @@ describe('on a line that is new a load is told to be safe before it is asked any
       advice: expect.stringContaining('THE LOAD MAY STILL BE ON') as string,
     });
     expect(lines.map(({ sent }) => sent)).toEqual([
-      ['INP OFF', '*IDN?'],
-      ['INP OFF', '*IDN?'],
+      ['', 'INP OFF', '*IDN?'],
+      ['', 'INP OFF', '*IDN?'],
     ]);
   });
 });
