@@ -1,5 +1,6 @@
 import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
 import { readAnyFile } from '../files/read-any-file.js';
+import { printable } from '../quantity/printable.js';
 import type { Streams } from './streams.js';
 import { errorText } from './error-text.js';
 import { readBenchDrivers, vocabulary } from './wiring.js';
@@ -15,7 +16,7 @@ export async function check(files: readonly string[], streams: Streams): Promise
       const file = await readAnyFile(path, vocabulary);
       const { kind, content } = file.value;
       if (kind === 'bench') await readBenchDrivers({ ...file, value: content });
-      streams.stdout.write(`${path}: a ${kind} file, and right\n`);
+      streams.stdout.write(`${printable(path)}: a ${kind} file, and right\n`);
     } catch (error) {
       if (!(error instanceof RailproofError)) throw error;
       streams.stderr.write(`${errorText(error)}\n`);

@@ -7,6 +7,7 @@ import { readDriver } from '../files/read-driver.js';
 import { shippedNames } from '../files/shipped-file.js';
 import { tryDriver, type TrialResult } from '../instrument/trial.js';
 import { visible } from '../instrument/visible.js';
+import { printable } from '../quantity/printable.js';
 import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
 import { connectors } from './connectors.js';
@@ -50,7 +51,7 @@ async function list(json: boolean, streams: Streams): Promise<ExitCode> {
     const listed = found.map(({ name, role, summary }) => ({ name, role, summary }));
     streams.stdout.write(jsonText({ format: 'railproof/drivers 1', drivers: listed }));
   } else {
-    const rows = found.map(({ name, role, summary }) => [name, role, summary]);
+    const rows = found.map(({ name, role, summary }) => [name, role, printable(summary)]);
     streams.stdout.write(`${alignTable(rows, ['left', 'left', 'left']).join('\n')}\n`);
   }
   return exitCodes.conforms;
@@ -63,7 +64,7 @@ async function tryOut(name: string, address: string, json: boolean, streams: Str
   const stop = stopOnSignals(streams);
   let ending: Ending = { how: 'as-it-should' };
   try {
-    if (!json) streams.stderr.write(`${driver.name} at ${connection.address}\n`);
+    if (!json) streams.stderr.write(`${driver.name} at ${printable(connection.address)}\n`);
     for await (const result of tryDriver({ driver, connection, clock: realClock, signal: stop.signal })) {
       results.push(result);
       if (!json) streams.stdout.write(`${resultLine(result)}\n`);

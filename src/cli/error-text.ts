@@ -1,5 +1,5 @@
 import { RailproofError } from '../errors/railproof-error.js';
-import { printable } from '../report/printable.js';
+import { printableLines } from '../quantity/printable.js';
 
 /**
  * An error as it is shown: what happened, then what to do next. One line, unless there are several
@@ -20,8 +20,4 @@ export function errorText(error: unknown): string {
 function sentence(text: string): string {
   const capital = text.replace(/^./u, (first) => first.toUpperCase());
   return /[.!?]$/.test(capital) ? capital : `${capital}.`;
-}
-
-function printableLines(text: string): string {
-  return text.split('\n').map(printable).join('\n');
 }

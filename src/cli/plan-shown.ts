@@ -1,5 +1,6 @@
 import { type Ceiling, type Ceilings, ceilingText } from '../bench/ceilings.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
+import { printable } from '../quantity/printable.js';
 import type { Dimension, Seconds } from '../quantity/quantity.js';
 import { alignTable } from '../report/align.js';
 import type { Plan } from '../run/plan.js';
@@ -9,13 +10,13 @@ export function planAsText(plan: Plan, done = 0): string {
   const rows = plan.steps.map(({ kind, summary, duration }, index) => [
     `${index + 1}`,
     kind.kind,
-    summary,
+    printable(summary),
     index < done ? 'done' : `about ${formatQuantity(Math.ceil(duration), 'time')}`,
   ]);
   return [
-    `${plan.procedure.name}: ${plan.procedure.title}`,
-    `${underTestInWords(plan)} on ${plan.bench.name}`,
-    ...plan.procedure.wiring.map((line) => `  wiring: ${line}`),
+    `${plan.procedure.name}: ${printable(plan.procedure.title)}`,
+    `${underTestInWords(plan)} on ${printable(plan.bench.name)}`,
+    ...plan.procedure.wiring.map((line) => `  wiring: ${printable(line)}`),
     ...alignTable(rows, ['right', 'left', 'left', 'left']).map((row) => `  ${row}`),
     `cautions to acknowledge: ${plan.cautions.length === 0 ? 'none' : plan.cautions.join(', ')}`,
     `never above ${ceilingsInWords(plan.ceilings)}`,

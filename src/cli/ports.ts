@@ -1,5 +1,6 @@
 import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { listPorts } from '../instrument/ports.js';
+import { printable } from '../quantity/printable.js';
 import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
 import type { Streams } from './streams.js';
@@ -12,7 +13,10 @@ export async function ports({ json }: { readonly json?: boolean }, streams: Stre
   } else if (found.length === 0) {
     streams.stdout.write('No serial ports here. Is the adapter plugged in?\n');
   } else {
-    const rows = found.map(({ path, description }) => [`serial:${path}?baud=9600`, description]);
+    const rows = found.map(({ path, description }) => [
+      `serial:${printable(path)}?baud=9600`,
+      printable(description),
+    ]);
     streams.stdout.write(`${alignTable(rows, ['left', 'left']).join('\n')}\n`);
   }
   return exitCodes.conforms;

@@ -1,5 +1,6 @@
 import { Command, CommanderError, Option } from 'commander';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import { printableLines } from '../quantity/printable.js';
 import { errorText } from './error-text.js';
 import { packageFacts } from './package-facts.js';
 import type { RunOptions } from './run-wanted.js';
@@ -33,7 +34,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     .exitOverride()
     .configureOutput({
       writeOut: (text) => streams.stdout.write(text),
-      writeErr: (text) => streams.stderr.write(text),
+      writeErr: (text) => streams.stderr.write(printableLines(text)),
     })
     .showHelpAfterError('(railproof help <command> shows examples)')
     .addHelpText('after', exitStatusHelp);

@@ -1,6 +1,7 @@
 import { clearLine, cursorTo } from 'node:readline';
 import type { Clock } from '../clock/clock.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
+import { printable } from '../quantity/printable.js';
 import type { Dimension, Seconds } from '../quantity/quantity.js';
 import type { Plan } from '../run/plan.js';
 import type { RunWatcher } from '../run/perform.js';
@@ -32,7 +33,7 @@ export class ProgressLine implements RunWatcher {
   stepBegan(step: number, kind: string, summary: string): void {
     this.#stepBegan = this.#clock.now();
     this.clear();
-    this.#stream.write(`step ${step} of ${this.#plan.steps.length}: ${kind}, ${summary}\n`);
+    this.#stream.write(`step ${step} of ${this.#plan.steps.length}: ${kind}, ${printable(summary)}\n`);
   }
 
   progress(step: number, progress: Progress): void {
@@ -47,7 +48,7 @@ export class ProgressLine implements RunWatcher {
 
   noticed(text: string): void {
     this.clear();
-    this.#stream.write(`  ${text}\n`);
+    this.#stream.write(`  ${printable(text)}\n`);
   }
 
   /** Leaves an empty line for whoever writes next. */
@@ -67,7 +68,7 @@ export class ProgressLine implements RunWatcher {
       current === undefined ? '' : show(current, 'current'),
       power === undefined ? '' : show(power, 'power'),
       temperature === undefined ? '' : show(temperature, 'temperature'),
-      note ?? '',
+      printable(note ?? ''),
       `${minutes(now - this.#began)} gone, about ${minutes(this.#remaining(step, now))} left`,
     ]
       .filter((part) => part !== '')

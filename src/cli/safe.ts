@@ -1,6 +1,7 @@
 import { loadMayStillBeOn, makeSafeUnopened } from '../bench/make-safe.js';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { readBench } from '../files/read-bench.js';
+import { printable } from '../quantity/printable.js';
 import { errorText } from './error-text.js';
 import type { Streams } from './streams.js';
 import { planDrivers, readBenchDrivers, worldOf } from './wiring.js';
@@ -16,10 +17,12 @@ export async function safe(wanted: { readonly bench: string }, streams: Streams)
     const { connect, clock } = await worldOf(file.value, drivers);
     const { safety, address } = await makeSafeUnopened({ bench: file.value, drivers, connect, clock });
     if (safety.kind === 'confirmed') {
-      streams.stdout.write(`The load at ${address} is off; it was read back.\n`);
+      streams.stdout.write(`The load at ${printable(address)} is off; it was read back.\n`);
       return exitCodes.conforms;
     }
-    streams.stderr.write(`It could not be confirmed that the load is off: ${safety.why}\n${safety.advice}\n`);
+    streams.stderr.write(
+      `It could not be confirmed that the load is off: ${printable(safety.why)}\n${safety.advice}\n`,
+    );
     return exitCodes.instrument;
   } catch (error) {
     streams.stderr.write(`${errorText(error)}\n${loadMayStillBeOn}\n`);

@@ -3,6 +3,7 @@ import { realClock } from '../clock/real-clock.js';
 import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { withAddresses } from '../files/live-bench.js';
 import { readBench } from '../files/read-bench.js';
+import { printable } from '../quantity/printable.js';
 import { type ServedBench, serveBench } from '../simulation/serve.js';
 import { errorText } from './error-text.js';
 import type { Streams } from './streams.js';
@@ -51,7 +52,7 @@ async function doAsTyped(operator: ServedBench['operator'], { stdin, stderr }: S
     if (act === '') continue;
     try {
       await operator.act(act);
-      stderr.write(`done: ${act}\n`);
+      stderr.write(`done: ${printable(act)}\n`);
     } catch (error) {
       stderr.write(`${errorText(error)}\n`);
     }

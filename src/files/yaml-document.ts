@@ -1,7 +1,7 @@
 import { isMap, isNode, isScalar, isSeq, LineCounter, parseDocument, type Document, type Pair } from 'yaml';
 import { BadFileError, type FileProblem } from './file-error.js';
 import { largestFile, tooLarge } from './file-size.js';
-import { limitProblem, nestsTooDeeply, repeatedKeys } from './yaml-limits.js';
+import { limitProblem, nestsTooDeeply, repeatedKeys, unprintable } from './yaml-limits.js';
 import { syntaxProblem, type TextProblem } from './yaml-syntax.js';
 
 /** Something wrong with what a file says, before its place in the text has been looked up. */
@@ -37,11 +37,11 @@ export function parseYaml(text: string, fileName: string): YamlDocument {
   };
 
   if (source.length > largestFile) return refuse([{ offset: 0, message: tooLarge }]);
-  const deep = nestsTooDeeply(source);
-  if (deep !== undefined) {
+  const unread = unprintable(source) ?? nestsTooDeeply(source);
+  if (unread !== undefined) {
     for (let end = source.indexOf('\n'); end >= 0; end = source.indexOf('\n', end + 1))
       lines.addNewLine(end + 1);
-    return refuse([deep]);
+    return refuse([unread]);
   }
   const document = parseDocument(source, {
     version: '1.2',

@@ -7,6 +7,17 @@ export const mostValues = 20_000;
 const deepest = 64;
 
 /**
+ * Looks for a character that steers a terminal or turns the direction of the text, as no YAML and no text of
+ * ours holds it: files are shown to people, comments and all, and what they see must be what is there.
+ */
+export function unprintable(source: string): TextProblem | undefined {
+  const found = /(?![\t\n\r\u0085])\p{Cc}|[\p{Cs}\u2028-\u202e\u2066-\u2069\ufffe\uffff]/u.exec(source);
+  if (found === null) return undefined;
+  const code = (found[0].codePointAt(0) ?? 0).toString(16).toUpperCase().padStart(4, '0');
+  return { offset: found.index, message: `a character stands here that cannot be shown (U+${code})` };
+}
+
+/**
  * Looks for nesting that no file of ours has, before the parser, which recurses, sees the text. Brackets
  * in quoted texts count too; they are closed again, so they do no harm.
  */

@@ -1,14 +1,6 @@
-/**
- * A text with whatever would break a line, steer a terminal or hide itself (controls, formats, lone
- * surrogates) written as an escape: `\u001b`. What a record says comes from files and instruments, and a
- * record may come from anywhere.
- */
-export function printable(text: string): string {
-  return text.replace(
-    /[\p{Cc}\p{Cf}\p{Cs}\u2028\u2029]/gu,
-    (unit) => `\\u${(unit.codePointAt(0) ?? 0).toString(16).padStart(4, '0')}`,
-  );
-}
+import { printable } from '../quantity/printable.js';
+
+export { printable };
 
 /** Plain data with every text in it made printable; what is neither list nor plain object stays as it is. */
 export function printableData<T>(data: T): T {

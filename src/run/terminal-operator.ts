@@ -1,5 +1,6 @@
 import { createInterface } from 'node:readline/promises';
 import type { Readable, Writable } from 'node:stream';
+import { printableLines } from '../quantity/printable.js';
 import type { Acknowledgement } from '../record/journal-event.js';
 import type { Operator, OperatorRequest } from '../steps/operator.js';
 import { StoppedByOperator } from './stopped.js';
@@ -63,7 +64,8 @@ export class TerminalOperator implements Operator {
   /** Broken between words where there is a terminal; whoever reads a pipe has lines of their own. */
   #fitted(text: string): string {
     const { columns } = this.#terminal.output;
-    return columns === undefined ? text : wordWrap(text, Math.min(columns, widestText));
+    const said = printableLines(text);
+    return columns === undefined ? said : wordWrap(said, Math.min(columns, widestText));
   }
 
   /** At the end of the input a question would never be answered, so that is taken as a wish to stop. */
