@@ -1,8 +1,10 @@
-import { existsSync, readdirSync, readFileSync } from 'node:fs';
+import { existsSync, readdirSync } from 'node:fs';
 import { join } from 'node:path';
 import { z } from 'zod';
 import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
+import { printable } from '../quantity/printable.js';
+import { readWhole } from '../record/read-whole.js';
 import { runFolderAt } from '../record/run-folder.js';
 import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
@@ -20,9 +22,9 @@ export function runs(
     const entry = entryOf(join(wanted.folder, name));
     const { ended, outcome, recommended } = entry;
     rows.push([
-      name,
-      ended,
-      outcome,
+      printable(name),
+      printable(ended),
+      printable(outcome),
       recommended === null ? '' : formatQuantity(recommended, 'current', { significant: 3 }),
     ]);
     listed.push({ run: name, ...entry });
@@ -30,7 +32,7 @@ export function runs(
   if (wanted.json === true) {
     streams.stdout.write(jsonText({ format: 'railproof/runs 1', runs: listed }));
   } else if (rows.length === 0) {
-    streams.stdout.write(`No records in ${wanted.folder}.\n`);
+    streams.stdout.write(`No records in ${printable(wanted.folder)}.\n`);
   } else {
     const head = ['record', 'ended', 'outcome', 'recommended'];
     streams.stdout.write(`${alignTable([head, ...rows], ['left', 'left', 'left', 'right']).join('\n')}\n`);
@@ -81,9 +83,10 @@ const summary = z.object({
 function entryOf(path: string): Entry {
   let text: string;
   try {
-    text = readFileSync(runFolderAt(path).findings, 'utf8');
-  } catch {
-    return { ended: 'cut-off', outcome: '', recommended: null };
+    text = readWhole(runFolderAt(path).findings);
+  } catch (error) {
+    const missing = (error as NodeJS.ErrnoException).code === 'ENOENT';
+    return { ended: missing ? 'cut-off' : 'unreadable', outcome: '', recommended: null };
   }
   const parsed = summary.safeParse(parseJson(text));
   if (!parsed.success) return { ended: 'unreadable', outcome: '', recommended: null };

@@ -1,6 +1,7 @@
-import { closeSync, openSync, readSync } from 'node:fs';
+import { closeSync, readSync } from 'node:fs';
 import type { TimedEvent } from './journal-event.js';
 import { parseLine } from './journal-line.js';
+import { openRegular } from './read-whole.js';
 import { NoRecordError } from './record-error.js';
 import { isSealed, newSealer, sealHolds } from './seal.js';
 
@@ -114,7 +115,7 @@ function eachLine(
 ): void {
   let file: number;
   try {
-    file = openSync(path, 'r');
+    file = openRegular(path);
   } catch (cause) {
     throw new NoRecordError(path, cause);
   }

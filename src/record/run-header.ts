@@ -1,8 +1,9 @@
 import { createHash } from 'node:crypto';
-import { existsSync, readFileSync } from 'node:fs';
+import { existsSync } from 'node:fs';
 import { join } from 'node:path';
 import { z } from 'zod';
 import { baselineSchema } from './baseline.js';
+import { OddFileError, readWhole } from './read-whole.js';
 import { BadRecordError, NoRecordError } from './record-error.js';
 
 /**
@@ -112,8 +113,9 @@ export function readHeader(folder: string): HeaderRead {
   const path = join(folder, 'run.json');
   let text: string;
   try {
-    text = readFileSync(path, 'utf8');
+    text = readWhole(path);
   } catch (cause) {
+    if (cause instanceof OddFileError) throw new NoRecordError(path, cause);
     throw new NoRecordError(folder, existsSync(folder) && !existsSync(path) ? undefined : cause);
   }
   const sha256 = createHash('sha256').update(text).digest('hex');
