@@ -37,7 +37,7 @@ export function readDialogueLine(line: string): TraceEntry | undefined {
   const entry = objectIn(line);
   if (entry === undefined || Object.keys(entry).length !== 2) return undefined;
   const t = entry['t'];
-  if (typeof t !== 'number') return undefined;
+  if (typeof t !== 'number' || !Number.isFinite(t)) return undefined;
   for (const direction of ['sent', 'received'] as const) {
     const text = entry[direction];
     if (typeof text === 'string')

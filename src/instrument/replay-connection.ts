@@ -1,3 +1,4 @@
+import { constants } from 'node:fs';
 import { open, type FileHandle } from 'node:fs/promises';
 import type { Clock } from '../clock/clock.js';
 import type { ConnectionAddress } from '../files/bench.js';
@@ -22,7 +23,8 @@ const rounding: Seconds = 1e-9;
  */
 export async function openReplay(address: ReplayAddress, clock: Clock): Promise<Connection> {
   const { file } = address;
-  const handle = await open(file).catch((cause: unknown) => {
+  // Not blocking: else the opening of a pipe waits for somebody to write to it.
+  const handle = await open(file, constants.O_RDONLY | constants.O_NONBLOCK).catch((cause: unknown) => {
     const missing = (cause as NodeJS.ErrnoException).code === 'ENOENT';
     throw new DialogueFileError({
       file,
@@ -32,8 +34,9 @@ export async function openReplay(address: ReplayAddress, clock: Clock): Promise<
     });
   });
   try {
-    const { size } = await handle.stat();
-    if (size > largest) throw new DialogueFileError({ file, reason: `larger than ${largest} bytes` });
+    const found = await handle.stat();
+    if (!found.isFile()) throw new DialogueFileError({ file, reason: 'it is no file' });
+    if (found.size > largest) throw new DialogueFileError({ file, reason: `larger than ${largest} bytes` });
     const lines = handle.readLines()[Symbol.asyncIterator]();
     const first = await nextLine(lines, file, 1);
     if (first === undefined || readDialogueHeader(first) === undefined) {

@@ -1,4 +1,5 @@
-import { mkdtemp, rm, writeFile } from 'node:fs/promises';
+import { execFileSync } from 'node:child_process';
+import { mkdtemp, rm, truncate, writeFile } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import fc from 'fast-check';
@@ -96,6 +97,7 @@ describe('a replayed dialogue', () => {
     [`${header}{"t":0,"said":"*IDN?\\n"}\n`, 2],
     [`${header}{"t":0,"sent":"€"}\n`, 2],
     [`${header}{"t":0,"sent":"a","received":"b"}\n`, 2],
+    [`${header}{"t":1e309,"sent":"*IDN?\\n"}\n`, 2],
   ])('that is not in the format is refused with its line: %j', async (text, line) => {
     const file = await fileOf(text);
     const opened = async (): Promise<void> => {
@@ -103,6 +105,19 @@ describe('a replayed dialogue', () => {
       await connection.write(bytes('*IDN?\n')).finally(() => connection.close());
     };
     await expect(opened()).rejects.toMatchObject({ code: 'DIALOGUE_FILE', exitCode: 65, file, line });
+  });
+
+  it.each(['/dev/zero', '/dev/null', '.'])('%s is refused: it is no file', async (path) => {
+    await expect(replay(path)).rejects.toMatchObject({ code: 'DIALOGUE_FILE', exitCode: 65 });
+  });
+
+  it('a pipe that nobody writes to is refused, and a file of a size beyond reason', async () => {
+    const pipe = `${await fileOf('')}.pipe`;
+    execFileSync('mkfifo', [pipe]);
+    await expect(replay(pipe)).rejects.toThrow(`${pipe}: it is no file`);
+    const huge = await fileOf(header);
+    await truncate(huge, 2 ** 30);
+    await expect(replay(huge)).rejects.toMatchObject({ code: 'DIALOGUE_FILE', exitCode: 65 });
   });
 
   it('that is not there is a missing file', async () => {
