@@ -1,6 +1,7 @@
 import { spawnSync } from 'node:child_process';
 import { once } from 'node:events';
-import { existsSync } from 'node:fs';
+import { existsSync, readdirSync, readFileSync, readlinkSync } from 'node:fs';
+import { networkInterfaces } from 'node:os';
 import { createServer, connect, type AddressInfo, type Socket } from 'node:net';
 import { SerialPort } from 'serialport';
 import { afterEach, describe, expect, it } from 'vitest';
@@ -250,5 +251,67 @@ describe('without socat', () => {
     expect(refused).toBeInstanceOf(CannotServeError);
     expect(refused).toMatchObject({ reason: 'socat is not installed' });
     expect((refused as CannotServeError).advice).toContain('apt install socat');
+  });
+});
+
+/** The addresses at which this process listens, as the system lists them: `0100007F:1A2B`. */
+function listeningHere(): readonly string[] {
+  const mine = new Set(
+    readdirSync('/proc/self/fd').flatMap((file) => {
+      try {
+        return [/^socket:\[(\d+)\]$/.exec(readlinkSync(`/proc/self/fd/${file}`))?.[1] ?? ''];
+      } catch {
+        return [];
+      }
+    }),
+  );
+  return ['tcp', 'tcp6'].flatMap((protocol) => {
+    const path = `/proc/net/${protocol}`;
+    if (!existsSync(path)) return [];
+    const rows = readFileSync(path, 'utf8')
+      .split('\n')
+      .map((row) => row.trim().split(/ +/));
+    return rows.flatMap(([, local = '', , state, , , , , , inode = '']) =>
+      state === '0A' && mine.has(inode) ? [local] : [],
+    );
+  });
+}
+
+function reaches(host: string, port: number): Promise<boolean> {
+  return new Promise((resolve) => {
+    const socket = connect({ host, port });
+    const done = (reached: boolean): void => {
+      socket.destroy();
+      resolve(reached);
+    };
+    socket.once('connect', () => {
+      done(true);
+    });
+    socket.once('error', () => {
+      done(false);
+    });
+  });
+}
+
+describe.runIf(process.platform === 'linux')('a served bench is for this machine only', () => {
+  const lines = socatIsMissing ? (['tcp'] as const) : (['tcp', 'pty'] as const);
+
+  it.each(lines)('on %s every socket listens on the loopback address', async (kind) => {
+    const before = new Set(listeningHere());
+    await serve({ lines: kind });
+    const opened = listeningHere().filter((address) => !before.has(address));
+    expect(opened).toHaveLength(2);
+    for (const address of opened) expect(address).toMatch(/^0100007F:/);
+  });
+
+  it('nobody gets in by another address of it', async () => {
+    const { addresses } = await serve();
+    const port = portIn(addresses.load);
+    const others = Object.values(networkInterfaces())
+      .flatMap((interfaces) => interfaces ?? [])
+      .filter(({ address }) => address !== '127.0.0.1' && !address.startsWith('fe80:'))
+      .map(({ address }) => address);
+    expect(await reaches('127.0.0.1', port)).toBe(true);
+    for (const other of ['::1', ...others]) expect(await reaches(other, port)).toBe(false);
   });
 });
