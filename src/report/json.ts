@@ -66,7 +66,12 @@ function watchmanAsJson({ watchman }: Result): object {
 }
 
 function findingAsJson(finding: Finding): object {
-  const { dimension, interval, standardUncertainty } = finding;
+  const { dimension } = finding;
+  // JSON knows no infinity, and an interval without an end says nothing: there is none then.
+  const interval = finding.interval?.every(Number.isFinite) === true ? finding.interval : null;
+  const standardUncertainty = Number.isFinite(finding.standardUncertainty)
+    ? finding.standardUncertainty
+    : null;
   const inUnit = (value: number): number => (dimension === null ? value : toJsonUnit(value, dimension));
   return {
     name: finding.name,
