@@ -1,5 +1,5 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Celsius } from '../quantity/quantity.js';
+import type { Amperes, Celsius } from '../quantity/quantity.js';
 import { GuardTrippedError } from './bench-error.js';
 import { inARow, type Seen } from './frozen-readings.js';
 import type { Told } from './guards.js';
@@ -25,22 +25,25 @@ export class ImpossibleCurrents {
     this.#below = current < -this.#trust.zero ? this.#below + 1 : 0;
     if (told.current === undefined && told.voltage === undefined)
       this.#whileOff = current > this.#trust.zero ? this.#whileOff + 1 : 0;
-    const read = formatQuantity(current, 'current', { significant: 4 });
     if (this.#below >= inARow) {
       throw new GuardTrippedError(
         'implausible-reading',
-        `${inARow} times in a row the load reads ${read}, and a load only takes current`,
+        `${inARow} times in a row the load reads ${amps(current)}, and a load only takes current`,
         'are its leads the right way round, is its zero set, is its driver the right one?',
       );
     }
     if (this.#whileOff >= inARow) {
       throw new GuardTrippedError(
         'current-while-off',
-        `with its input off the load reads ${read}, ${inARow} times in a row`,
+        `with its input off the load reads ${amps(current)}, ${inARow} times in a row`,
         'it repeats an old reading, or its input is not off: unplug the module, then look at its panel',
       );
     }
   }
+}
+
+function amps(value: Amperes): string {
+  return formatQuantity(value, 'current', { significant: 4 });
 }
 
 /** A thermometer on a module in a room; an open or a shorted probe reads beyond these, and guards nothing. */
