@@ -17,6 +17,8 @@ export class MeterPlaces {
   readonly #ownOf: (place: number) => Instrument | undefined;
   /** Where a person has put the probes; undefined is their usual place. */
   #moved: string | undefined;
+  /** The channel that the scanner was told to close last. */
+  #closed: number | undefined;
 
   constructor(facts: {
     readonly group: Group | undefined;
@@ -67,8 +69,21 @@ export class MeterPlaces {
     }
   }
 
+  /**
+   * Asks whether the channel that was closed last is so still: a scanner that has lost its power has let go of
+   * it, and what was read since then is of no place.
+   * @throws ScannerStuckError
+   */
+  async confirm(): Promise<void> {
+    const scanner = this.#scanner;
+    if (scanner === undefined || this.#closed === undefined || this.#moved !== undefined) return;
+    if (scanner.reads('closed-channel')) await checkClosed(scanner, this.#closed);
+    else await scanner.perform('close-channel', { channel: this.#closed });
+  }
+
   /** Opens every channel of the scanner, so that the meter's own leads are all that it reads. */
   async release(): Promise<void> {
+    this.#closed = undefined;
     await this.#scanner?.perform('open-all');
   }
 
@@ -86,10 +101,8 @@ export class MeterPlaces {
     const scanner = this.#scanner;
     if (scanner === undefined) return;
     await scanner.perform('close-channel', { channel });
-    if (scanner.reads('closed-channel')) {
-      const closed = await scanner.channel('closed-channel');
-      if (closed !== channel) throw new ScannerStuckError(scanner.address, channel, closed);
-    }
+    if (scanner.reads('closed-channel')) await checkClosed(scanner, channel);
+    this.#closed = channel;
     // The relay bounces, and what the meter measures has changed as much as on any step of the load.
     await this.#clock.sleep(Math.max(scanner.driver.settling, this.#meter?.driver.settling ?? 0));
   }
@@ -99,6 +112,11 @@ export class MeterPlaces {
     if (channel === undefined) throw new Error(`place ${place} has no channel`);
     return channel;
   }
+}
+
+async function checkClosed(scanner: Instrument, channel: number): Promise<void> {
+  const closed = await scanner.channel('closed-channel');
+  if (closed !== channel) throw new ScannerStuckError(scanner.address, channel, closed);
 }
 
 async function read(

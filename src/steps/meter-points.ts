@@ -8,6 +8,7 @@ import type { Phase } from '../record/journal-event.js';
 import { RunningMoments } from '../statistics/running-moments.js';
 import { asRead } from './as-read.js';
 import type { StepContext } from './step-kind.js';
+import { uninterrupted } from './uninterrupted.js';
 
 type Meter = NonNullable<OpenBench['meter']>;
 
@@ -20,6 +21,12 @@ export interface MeterPointPlan {
   /** Wait before the first reading. */
   readonly dwell: Seconds;
   readonly readings: number;
+}
+
+/** What is made of the readings of one point. */
+interface Look<Seen> {
+  readonly enough: (value: number, samples: number) => boolean;
+  readonly seen: () => Seen;
 }
 
 /** Points at which the meter alone is read: nothing is set, and whatever the load is connected to is off. */
@@ -47,45 +54,78 @@ export class MeterPoints {
 
   /** Several readings of a voltage, as they are. */
   async voltage(plan: MeterPointPlan): Promise<RunningMoments> {
-    const values = new RunningMoments();
-    await this.#take(plan, 'voltage', plan.dwell, (volts, samples) => {
-      values.add(volts);
-      return samples >= plan.readings;
+    return this.#take(plan, 'voltage', plan.dwell, () => {
+      const values = new RunningMoments();
+      return {
+        enough: (volts, samples) => {
+          values.add(volts);
+          return samples >= plan.readings;
+        },
+        seen: () => values,
+      };
     });
-    return values;
   }
 
   /** Looks until the voltage is `below`, or `wait` is over. @returns what was read last */
   async voltageFalls(plan: Omit<MeterPointPlan, 'readings'>, below: Volts, wait: Seconds): Promise<Volts> {
     const end = this.#context.clock.now() + wait;
-    let last = Number.NaN;
-    await this.#take(plan, 'voltage', lookEvery, (volts) => {
-      last = volts;
-      return Math.abs(volts) < below || this.#context.clock.now() >= end;
+    return this.#take(plan, 'voltage', lookEvery, () => {
+      let last = Number.NaN;
+      return {
+        enough: (volts) => {
+          last = volts;
+          return Math.abs(volts) < below || this.#context.clock.now() >= end;
+        },
+        seen: () => last,
+      };
     });
-    return last;
   }
 
   /** Several readings of a resistance; an open circuit is one too. */
   async resistance(plan: MeterPointPlan): Promise<OhmReadings> {
-    const values = new RunningMoments();
-    let open = 0;
-    await this.#take(plan, 'resistance', 0, (ohms, samples) => {
-      if (ohms === Number.POSITIVE_INFINITY) open += 1;
-      else values.add(ohms);
-      return samples >= plan.readings;
+    return this.#take(plan, 'resistance', 0, () => {
+      const values = new RunningMoments();
+      let open = 0;
+      return {
+        enough: (ohms, samples) => {
+          if (ohms === Number.POSITIVE_INFINITY) open += 1;
+          else values.add(ohms);
+          return samples >= plan.readings;
+        },
+        seen: () => ({ values, open }),
+      };
     });
-    return { values, open };
   }
 
-  /** Readings until `enough` of them; one without a value is none, and too many such in a row end it. */
-  async #take(
+  /**
+   * Readings until `enough` of them; one without a value is none, and too many such in a row end it. A point that
+   * is interrupted is taken again with a look of its own.
+   */
+  #take<Seen>(
+    plan: Omit<MeterPointPlan, 'readings'>,
+    what: 'voltage' | 'resistance',
+    every: Seconds,
+    look: () => Look<Seen>,
+  ): Promise<Seen> {
+    return uninterrupted(this.#context, async () => {
+      const { enough, seen } = look();
+      const outcome = await this.#takeOnce(plan, what, every, enough);
+      return outcome === 'interrupted' ? outcome : seen();
+    });
+  }
+
+  async #takeOnce(
     { phase, of, dwell }: Omit<MeterPointPlan, 'readings'>,
     what: 'voltage' | 'resistance',
     every: Seconds,
-    enough: (value: number, samples: number) => boolean,
-  ): Promise<void> {
-    const { journal, clock, signal, step } = this.#context;
+    enough: Look<unknown>['enough'],
+  ): Promise<'measured' | 'interrupted'> {
+    const { bench, journal, clock, signal, step } = this.#context;
+    const { gaps } = bench;
+    const end = (outcome: 'measured' | 'interrupted'): typeof outcome => {
+      journal.append({ event: 'point-ended', step, point, outcome });
+      return outcome;
+    };
     signal.throwIfAborted();
     this.#count += 1;
     const point = this.#count;
@@ -96,12 +136,12 @@ export class MeterPoints {
     for (let sample = 1; ; sample += 1) {
       if (sample > 1) await clock.sleep(every, signal);
       const value = await this.#read(point, sample, what);
+      if (bench.gaps !== gaps) return end('interrupted');
       this.#blind.count(Number.isNaN(value) ? what : undefined);
       if (Number.isNaN(value)) continue;
       seen += 1;
-      if (enough(value, seen)) break;
+      if (enough(value, seen)) return end('measured');
     }
-    journal.append({ event: 'point-ended', step, point, outcome: 'measured' });
   }
 
   /** Infinity for an open circuit, not a number where the meter has none. */

@@ -9,6 +9,7 @@ import { asRead } from './as-read.js';
 import { flows, isGone } from './holding.js';
 import { openCircuitVoltage } from './known-voltage.js';
 import type { StepContext } from './step-kind.js';
+import { uninterrupted } from './uninterrupted.js';
 
 /** What one sample says of the module, as far as a step must know it to go on. */
 export interface Seen {
@@ -91,11 +92,18 @@ export class Points {
   /**
    * One point: set, wait, read several times; everything is in the journal before the next thing happens,
    * and every sample has passed the guards. A sample in which the voltage, or the current while one flows,
-   * could not be read is not judged, and the point ends with none such.
+   * could not be read is not judged, and the point ends with none such. One that is interrupted is taken again
+   * from its set-point on; a plan that remembers what it saw is given as the making of it, so that each take
+   * begins with a fresh one.
    * @throws LoadSwitchedOffError when the load's input is off and the module's voltage is there; the point
    * then ends without an outcome.
+   * @throws UnsteadyLineError
    */
-  async take(plan: PointPlan): Promise<PointSeen> {
+  take(plan: PointPlan | (() => PointPlan)): Promise<PointSeen> {
+    return uninterrupted(this.#context, () => this.#take(typeof plan === 'function' ? plan() : plan));
+  }
+
+  async #take(plan: PointPlan): Promise<PointSeen | 'interrupted'> {
     const { bench, journal, clock, signal, step } = this.#context;
     signal.throwIfAborted();
     this.#count += 1;
@@ -104,18 +112,32 @@ export class Points {
     journal.append({ event: 'point-began', step, point, phase: plan.phase, set: plan.set, ...of });
     if (plan.set.current !== undefined) await bench.load.setCurrent(plan.set.current, this.#openCircuit);
     if (plan.set.voltage !== undefined) await bench.load.setVoltage(plan.set.voltage);
+    const { gaps } = bench;
+    const isWhole = (): boolean => bench.gaps === gaps;
     const settling = bench.instruments.map(({ instrument }) => instrument.driver.settling);
     await clock.sleep(Math.max(plan.dwell, ...settling), signal);
-    const { last, ...rest } = await this.#read(plan, point);
+    const seen = await this.#see(plan, point, isWhole);
+    const outcome = seen !== 'interrupted' && isWhole() ? seen.outcome : 'interrupted';
+    journal.append({ event: 'point-ended', step, point, outcome });
+    return outcome === 'interrupted' ? outcome : seen;
+  }
+
+  /** All that a point amounts to, as far as it is whole. */
+  async #see(plan: PointPlan, point: number, isWhole: () => boolean): Promise<PointSeen | 'interrupted'> {
+    const read = await this.#read(plan, point, isWhole);
+    if (read === 'interrupted') return read;
+    const { last, ...rest } = read;
     const load = await this.#loadAfter(plan.set, last);
-    journal.append({ event: 'point-ended', step, point, outcome: rest.outcome });
+    await this.#context.bench.places.confirm();
     return { ...rest, last: last.t, load };
   }
 
+  /** Nothing is made of a sample that was taken across a gap, and of none that would follow it. */
   async #read(
     plan: PointPlan,
     point: number,
-  ): Promise<Omit<PointSeen, 'last' | 'load'> & { readonly last: Seen }> {
+    isWhole: () => boolean,
+  ): Promise<(Omit<PointSeen, 'last' | 'load'> & { readonly last: Seen }) | 'interrupted'> {
     const { bench, clock, signal } = this.#context;
     const { current: set } = plan.set;
     const ends = plan.until ?? ((_seen, judged) => judged === 'dropped');
@@ -128,6 +150,7 @@ export class Points {
     for (let sample = 1; ; sample += 1) {
       if (sample > 1) await clock.sleep(plan.every ?? stagger(sample), signal);
       const seen = await this.#sample(point, sample, plan);
+      if (!isWhole()) return 'interrupted';
       const unread = unreadIn(seen, plan, bench);
       this.#blind.count(unread);
       if (unread !== undefined) continue;

@@ -120,26 +120,29 @@ async function overload(
   given: { current: Amperes; dwell: Seconds; lasting: Seconds; judge: ReturnType<typeof holds> },
 ): Promise<boolean> {
   const { current, dwell, judge } = given;
-  const end = clock.now() + given.lasting;
-  let before = clock.now();
-  let looks = 0;
-  let dropped = false;
-  const { outcome, last } = await points.take({
-    phase: 'overload',
-    set: { current },
-    dwell,
-    readings: Number.POSITIVE_INFINITY,
-    every: watchInterval,
-    judge: (seen) => {
-      dropped ||= judge(seen) === 'dropped';
-      return dropped ? 'dropped' : 'held';
-    },
-    until: ({ t }) => {
-      const next = t + (t - before);
-      before = t;
-      looks += 1;
-      return looks >= fewestLooks && next > end;
-    },
+  let end = clock.now();
+  const { outcome, last } = await points.take(() => {
+    let before = clock.now();
+    let looks = 0;
+    let dropped = false;
+    end = before + given.lasting;
+    return {
+      phase: 'overload',
+      set: { current },
+      dwell,
+      readings: Number.POSITIVE_INFINITY,
+      every: watchInterval,
+      judge: (seen) => {
+        dropped ||= judge(seen) === 'dropped';
+        return dropped ? 'dropped' : 'held';
+      },
+      until: ({ t }) => {
+        const next = t + (t - before);
+        before = t;
+        looks += 1;
+        return looks >= fewestLooks && next > end;
+      },
+    };
   });
   await clock.sleep(Math.max(0, end - last), signal);
   return outcome === 'dropped';

@@ -140,22 +140,25 @@ export class Search {
     this.#watched = true;
     const { clock, signal } = this.#context;
     if (this.#parameters.watch === 0) return;
-    const end = clock.now() + this.#parameters.watch;
-    let before = clock.now();
-    let count = 0;
-    const { last } = await this.#points.take({
-      phase: 'overload',
-      set: { current },
-      dwell: 0,
-      readings: Number.POSITIVE_INFINITY,
-      every: watchInterval,
-      judge: () => 'measured',
-      until: ({ t }) => {
-        const next = t + (t - before);
-        before = t;
-        count += 1;
-        return count >= fewestLooks && next > end;
-      },
+    let end = clock.now();
+    const { last } = await this.#points.take(() => {
+      let before = clock.now();
+      let count = 0;
+      end = before + this.#parameters.watch;
+      return {
+        phase: 'overload',
+        set: { current },
+        dwell: 0,
+        readings: Number.POSITIVE_INFINITY,
+        every: watchInterval,
+        judge: () => 'measured',
+        until: ({ t }) => {
+          const next = t + (t - before);
+          before = t;
+          count += 1;
+          return count >= fewestLooks && next > end;
+        },
+      };
     });
     await clock.sleep(Math.max(0, end - last), signal);
   }

@@ -50,3 +50,21 @@ export class TraceRisesError extends RailproofError {
     this.to = to;
   }
 }
+
+/** One take after the other of the same point was interrupted: over such a line nothing can be measured. */
+export class UnsteadyLineError extends RailproofError {
+  readonly code = 'UNSTEADY_LINE';
+  readonly exitCode = exitCodes.instrument;
+  readonly takes: number;
+  /** The last interruption, in words. */
+  readonly last: string;
+
+  constructor(facts: { takes: number; last: string }) {
+    super(`one point was interrupted ${facts.takes} times in a row; the last time: ${facts.last}`, {
+      advice:
+        'the line is not good enough to measure over: try another cable, a place away from what disturbs it, a lower baud rate, or a longer timeout in the driver',
+    });
+    this.takes = facts.takes;
+    this.last = facts.last;
+  }
+}

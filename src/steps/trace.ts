@@ -176,19 +176,21 @@ export class Trace {
   /** A point ends by the clock: a slow meter takes fewer readings, not a longer point. */
   #look(voltage: Volts): Promise<PointSeen> {
     const { dwell, readings, watch } = this.#parameters;
-    const end = this.#context.clock.now() + dwell + watch;
-    let count = 0;
-    return this.#points.take({
-      phase: 'trace',
-      set: { voltage },
-      dwell,
-      readings: Number.POSITIVE_INFINITY,
-      every: watchInterval,
-      judge: () => 'measured',
-      until: ({ t }) => {
-        count += 1;
-        return count >= readings && t >= end;
-      },
+    return this.#points.take(() => {
+      const end = this.#context.clock.now() + dwell + watch;
+      let count = 0;
+      return {
+        phase: 'trace',
+        set: { voltage },
+        dwell,
+        readings: Number.POSITIVE_INFINITY,
+        every: watchInterval,
+        judge: () => 'measured',
+        until: ({ t }) => {
+          count += 1;
+          return count >= readings && t >= end;
+        },
+      };
     });
   }
 
