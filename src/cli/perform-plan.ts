@@ -79,6 +79,7 @@ async function performWatched(
     ceilings: plan.ceilings,
     connect: world.connect,
     clock: world.clock,
+    signal: options.signal,
     onInput: (state, confirmed) => {
       watchman?.input(state, confirmed);
       append({ event: 'input', state, confirmed });
