@@ -39,6 +39,7 @@ export function parseYaml(text: string, fileName: string): YamlDocument {
   if (source.length > largestFile) return refuse([{ offset: 0, message: tooLarge }]);
   const unread = unprintable(source) ?? nestsTooDeeply(source);
   if (unread !== undefined) {
+    lines.addNewLine(0);
     for (let end = source.indexOf('\n'); end >= 0; end = source.indexOf('\n', end + 1))
       lines.addNewLine(end + 1);
     return refuse([unread]);

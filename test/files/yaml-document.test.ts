@@ -109,6 +109,48 @@ describe('a file made to do harm is refused in a moment', () => {
     ]);
   });
 
+  it.each([
+    ['a: 1 # \u001b[2J', 'a.yaml:1:8: a character stands here that cannot be shown (U+001B)'],
+    ['a: 1\nb: "\u202e"', 'a.yaml:2:5: a character stands here that cannot be shown (U+202E)'],
+    ['a:\n  - \u0000', 'a.yaml:2:5: a character stands here that cannot be shown (U+0000)'],
+    ['# \u2066', 'a.yaml:1:3: a character stands here that cannot be shown (U+2066)'],
+  ])('what would steer a terminal, in a comment too: %j', (text, problem) => {
+    expect(refused(text)).toEqual([problem]);
+  });
+
+  it.each<[string, (length: number) => string]>([
+    ['runs of blanks between dashes', (n) => `- ${' '.repeat(500)}`.repeat(n / 502)],
+    ['dashes', (n) => `${'- '.repeat(63)}x\n`.repeat(n / 128)],
+    ['blanks', (n) => `a:${' '.repeat(n - 4)}b`],
+    ['empty lines', (n) => `a: |\n${'\n'.repeat(n - 10)} b`],
+    ['one long key', (n) => `${'k'.repeat(n - 4)}: 1`],
+    ['one long quoted text', (n) => `a: "${'\\u0041'.repeat((n - 8) / 6)}"`],
+    ['quotes', (n) => `a: ${"'".repeat(n - 4)}`],
+    ['anchors', (n) => `- &a${'b'.repeat(20)} x\n`.repeat(n / 28)],
+    ['aliases', (n) => `- &a x\n${'- *a\n'.repeat(n / 5 - 2)}`],
+    ['keys', (n) => Array.from({ length: n / 12 }, (_, index) => `k${index}: 1`).join('\n')],
+    ['maps on a line', (n) => `a: [${'{b: 1},'.repeat(n / 7 - 2)}]`],
+    ['brackets', (n) => '['.repeat(n)],
+    ['colons', (n) => ':'.repeat(n)],
+    ['comments', (n) => '#\n'.repeat(n / 2)],
+    ['directives', (n) => '%a b\n'.repeat(n / 5)],
+    ['merges', (n) => `a: &a {b: 1}\n${'<<: *a\n'.repeat(n / 7 - 2)}`],
+    ['tags', (n) => '- !a x\n'.repeat(n / 7)],
+    ['folds', (n) => `a: >\n${'  b\n\n'.repeat(n / 5 - 2)}`],
+  ])('as much as may be read of %s takes no longer than a moment', (_, textOf) => {
+    const text = textOf(256 * 1024);
+    expect(text.length).toBeLessThanOrEqual(256 * 1024);
+    const began = process.cpuUsage();
+    try {
+      parseYaml(text, 'a.yaml');
+    } catch (error) {
+      expect(error).toBeInstanceOf(BadFileError);
+    }
+    const { user, system } = process.cpuUsage(began);
+    // A second on a machine of its own; here others work beside it.
+    expect((user + system) / 1e6).toBeLessThan(8);
+  });
+
   it('any text at all is read, or refused as a bad file', () => {
     const text = fc.array(
       fc.constantFrom(
