@@ -85,6 +85,7 @@ async function performWatched(
       append({ event: 'input', state, confirmed });
     },
     onNotice: (text) => {
+      options.watch.noticed(text);
       append({ event: 'notice', text });
     },
   });
