@@ -94,16 +94,24 @@ function rowElsewhere(reading: ReadingTaken & Pick<TimedEvent, 't'>, kind: strin
   const column = what === 'resistance' ? 'resistance (Ohm)' : 'voltage elsewhere (V)';
   return {
     ...rowOf(t, kind, point, sample),
-    'probes at': at,
+    'probes at': asText(at),
     ...(value === null ? {} : { [column]: value }),
   };
+}
+
+/**
+ * A text as a cell that no spreadsheet takes for a formula. Ours begin with a letter, but part of the journal
+ * may have been copied from a record of somebody else's.
+ */
+function asText(text: string): string {
+  return /^[=+\-@\t\r]/.test(text) ? `'${text}` : text;
 }
 
 function rowOf(t: number, kind: string, point: PointBegan, sample: number): Row {
   return {
     'time (s)': t,
     step: point.step,
-    'step kind': kind,
+    'step kind': asText(kind),
     point: point.point,
     phase: point.phase,
     sample,

@@ -12,6 +12,7 @@ import { setFlagsFromString } from 'node:v8';
 import { runInNewContext } from 'node:vm';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import { type JournalEvent, mustBeSealed } from '../../src/record/journal-event.js';
 import { checkJournal, type Integrity, readJournal } from '../../src/record/journal-reader.js';
 import { newSealer, sealLine } from '../../src/record/seal.js';
 import { opened, readBack, shortRun, temporaryFolder, writeJournal } from './some-run.js';
@@ -35,6 +36,10 @@ const nextSeal = (line: number, text: readonly string[] = lines): number =>
 /** The number of the last sealed line before this one; 0 when there is none. */
 const lastSealBefore = (line: number): number =>
   lines.findLastIndex((one, index) => index + 1 < line && one.includes('"seal"')) + 1;
+
+/** How many of these events stand up to the last that bears a seal. */
+const lastSealIn = (read: readonly JournalEvent[]): number =>
+  read.findLastIndex(({ event }) => mustBeSealed.has(event)) + 1;
 
 /** What is before the last good seal is still given. */
 function expectDamage(path: string, line: number, believed: number): void {
@@ -177,6 +182,57 @@ describe('a journal of any bytes', () => {
       ),
       { numRuns: 300 },
     );
+  });
+
+  it('gives what was written, up to where it was changed, whatever is done to its lines', () => {
+    const at = fc.nat({ max: lines.length - 1 });
+    const act = fc.oneof(
+      at.map((line) => (all: string[]) => all.toSpliced(line, 1)),
+      at.map((line) => (all: string[]) => all.toSpliced(line, 0, all[line] ?? '')),
+      fc.tuple(at, at).map(
+        ([one, other]) =>
+          (all: string[]) =>
+            all
+              .with(one % all.length, all[other % all.length] ?? '')
+              .with(other % all.length, all[one % all.length] ?? ''),
+      ),
+      fc.tuple(at, fc.json()).map(
+        ([line, text]) =>
+          (all: string[]) =>
+            all.toSpliced(line, 0, text),
+      ),
+      fc.nat({ max: bytes.length }).map((end) => (all: string[]) => all.join('\n').slice(0, end).split('\n')),
+    );
+    fc.assert(
+      fc.property(fc.array(act, { minLength: 1, maxLength: 3 }), (acts) => {
+        const changed = acts.reduce((all, change) => (all.length === 0 ? all : change(all)), [...lines]);
+        const path = journalOf(Buffer.from(changed.join('\n') + '\n'));
+        const checked = checkJournal(path);
+        const { events: read, integrity } = readBack(path);
+        // What stands after the last seal of a journal that was cut off bears no seal yet.
+        const sealed = integrity.kind === 'cut-off' ? lastSealIn(read) : read.length;
+        expect(read.slice(0, sealed)).toEqual(events.slice(0, sealed));
+        if (integrity.kind === 'whole') expect(read).toEqual(events);
+        expect(integrity.lines).toBeLessThanOrEqual(checked.lines);
+        if (checked.kind === 'damaged') expect(integrity.kind).toBe('damaged');
+      }),
+      { numRuns: 500 },
+    );
+  });
+
+  it.each([
+    '{"t":1e309,"event":"notice","text":""}',
+    '{"t":0.1,"event":"reading","step":1,"point":1,"sample":1,"of":"load","what":"current","value":1e309}',
+    '{"t":0.1,"event":"point-began","step":1,"point":1,"phase":"ramp","set":{"current":-1e309}}',
+    '{"t":0.1,"event":"recovery","step":1,"outcome":"came-back","after":0,"within":1e309}',
+    '{"t":0.1,"event":"step-ended","step":1,"carried":{"known":{"a":1e309},"tried":{},"earths":{}}}',
+    '{"t":0.1,"event":"step-ended","step":1,"carried":{"known":{},"tried":{"held":1e309},"earths":{}}}',
+  ])('takes no number beyond all numbers: %s', (line) => {
+    const first = sealLine(newSealer(), JSON.stringify({ t: 0, ...opened }));
+    expect(readBack(journalOf([first, line]))).toMatchObject({
+      events: [opened],
+      integrity: { kind: 'damaged', line: 2, lines: 1 },
+    });
   });
 
   it('ends at a line with good seals that holds no event of ours', () => {

@@ -52,6 +52,21 @@ describe('readings.csv', () => {
     ]);
   });
 
+  it('holds no cell that a spreadsheet would take for a formula', () => {
+    const reading = { event: 'reading', step: 1, point: 1, sample: 1 } as const;
+    const rows = rowsOf(
+      recordOf([
+        opened,
+        { event: 'step-began', step: 1, kind: '=1+1' },
+        { event: 'point-began', step: 1, point: 1, phase: 'share', set: {} },
+        { ...reading, of: 'meter', what: 'voltage', value: -0.4, at: '@SUM(A1)' },
+      ]),
+    );
+    expect(rows).toMatchObject([
+      { 'step kind': "'=1+1", 'probes at': "'@SUM(A1)", 'voltage elsewhere (V)': '-0.4' },
+    ]);
+  });
+
   it('gives what was read elsewhere a row of its own, which says where the probes were', () => {
     const reading = { event: 'reading', step: 1, point: 1, sample: 1 } as const;
     const rows = rowsOf(

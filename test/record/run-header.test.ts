@@ -79,6 +79,11 @@ describe('the header of a record', () => {
     );
   });
 
+  it('takes no number beyond all numbers', () => {
+    const text = JSON.stringify(someHeader).replace(/"voltage":[\d.]+/, '"voltage":1e309');
+    expect(() => readHeader(recordWith(text))).toThrow(expect.objectContaining({ code: 'BAD_RECORD' }));
+  });
+
   it('is missed in a folder that is no record', () => {
     mkdirSync(place('empty'));
     expect(() => readHeader(place('empty'))).toThrow(
