@@ -7,14 +7,14 @@ import { serveOnPty } from '../../src/simulation/serve-pty.js';
 export interface Muffler {
   /** For a bench file. */
   readonly address: string;
-  /** From now on the instrument hears everything and nobody hears the instrument; comes back with the next question. */
+  /** From now on the instrument hears everything and nobody hears the instrument; comes back when an answer was kept back. */
   mute(): Promise<void>;
 }
 
 /** Stands between a run and an instrument on a loopback port, on a port of its own or on a pty. */
 export async function muffler(port: number, as: 'tcp' | { readonly pty: string }): Promise<Muffler> {
   let muted = false;
-  let asked = (): void => undefined;
+  let keptBack = (): void => undefined;
   const sockets = new Set<Socket>();
   const server = createServer((near) => {
     const far = connect(port, '127.0.0.1');
@@ -23,11 +23,9 @@ export async function muffler(port: number, as: 'tcp' | { readonly pty: string }
       socket.on('error', () => socket.destroy()).once('close', () => sockets.delete(socket));
     }
     near.pipe(far);
-    near.on('data', () => {
-      asked();
-    });
     far.on('data', (bytes: Buffer) => {
-      if (!muted) near.write(bytes);
+      if (muted) keptBack();
+      else near.write(bytes);
     });
     far.once('end', () => near.end());
   }).listen(0, '127.0.0.1');
@@ -44,7 +42,7 @@ export async function muffler(port: number, as: 'tcp' | { readonly pty: string }
     mute: () => {
       muted = true;
       return new Promise((resolve) => {
-        asked = resolve;
+        keptBack = resolve;
       });
     },
   };

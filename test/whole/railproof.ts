@@ -3,7 +3,7 @@ import { once } from 'node:events';
 import { fileURLToPath } from 'node:url';
 
 export const root = fileURLToPath(new URL('../..', import.meta.url));
-const program = fileURLToPath(new URL('../../dist/cli/main.js', import.meta.url));
+export const program = fileURLToPath(new URL('../../dist/cli/main.js', import.meta.url));
 
 export interface Ended {
   readonly status: number | null;
@@ -15,13 +15,19 @@ interface Options {
   readonly cwd?: string;
   /** Options of Node itself. */
   readonly node?: readonly string[];
+  /** What starts Node, with its options, where that is another program. */
+  readonly under?: readonly string[];
   /** Beside our own environment. */
   readonly env?: Readonly<Record<string, string>>;
 }
 
 /** A `railproof` in a process of its own, as a user has it; standard input is at its end. */
 export function start(args: readonly string[], options: Options = {}): ChildProcess {
-  return spawn(process.execPath, [...(options.node ?? []), program, ...args], {
+  const [command = '', ...rest] = [
+    ...(options.under ?? []),
+    ...[process.execPath, ...(options.node ?? []), program, ...args],
+  ];
+  return spawn(command, rest, {
     cwd: options.cwd ?? root,
     stdio: ['ignore', 'pipe', 'pipe'],
     env: { ...process.env, NO_COLOR: '1', ...options.env },

@@ -3,11 +3,13 @@ import type { ChildProcess } from 'node:child_process';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { performance } from 'node:perf_hooks';
-import { afterAll, describe, expect, it, onTestFinished } from 'vitest';
+import { afterAll, describe, expect, it, onTestFinished, vi } from 'vitest';
 import { askLoad, journalOf, until } from './at-the-bench.js';
 import { muffler } from './muffler.js';
 import { ended, start } from './railproof.js';
 import { serve } from './served.js';
+
+vi.setConfig({ testTimeout: 60_000 });
 
 const folder = mkdtempSync(join(tmpdir(), 'railproof-twice-'));
 let count = 0;
