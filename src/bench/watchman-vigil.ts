@@ -10,7 +10,7 @@ export type Word = (typeof words)[number];
 /** How often a runner says that it still beats. */
 export const beatEvery: Seconds = 0.5;
 /** How long it may say nothing while the input is on, before it counts as hung. */
-export const longestSilence: Seconds = 4;
+export const longestSilence: Seconds = 3.5;
 /** How often the watchman looks. */
 export const lookEvery: Seconds = 0.5;
 /** The most that one look counts for: while the watchman itself slept, or got no turn, nothing was missed. */
@@ -20,6 +20,7 @@ const mostOfALook: Seconds = 1;
 export class Vigil {
   #input: 'on' | 'off' = 'off';
   #isDone = false;
+  #wasHeard = false;
   #silence: Seconds = 0;
   #lookedAt: Seconds;
 
@@ -28,7 +29,7 @@ export class Vigil {
   }
 
   hear(word: Word): void {
-    this.#silence = 0;
+    this.#wasHeard = true;
     if (word === 'on' || word === 'off') this.#input = word;
     if (word === 'done') this.#isDone = true;
   }
@@ -43,7 +44,9 @@ export class Vigil {
    * look's worth of patience and no more.
    */
   hangs(now: Seconds): boolean {
-    this.#silence += Math.min(now - this.#lookedAt, mostOfALook);
+    const sinceLook = Math.min(now - this.#lookedAt, mostOfALook);
+    this.#silence = this.#wasHeard ? 0 : this.#silence + sinceLook;
+    this.#wasHeard = false;
     this.#lookedAt = now;
     return this.#input === 'on' && this.#silence > longestSilence;
   }

@@ -1,0 +1,24 @@
+import { expect, it } from 'vitest';
+import { orderText, readOrder } from '../../src/bench/watchman-order.js';
+import { nursery } from './nursery-bench.js';
+
+it('an order is one line, and comes back with all that makes a load safe', async () => {
+  const { description, drivers } = await nursery();
+  const text = orderText({ folder: '/runs/K1 "at" work\n', bench: description, driver: drivers.load });
+  expect(text).not.toContain('\n');
+  const { folder, bench, driver } = readOrder(text);
+  expect(folder).toBe('/runs/K1 "at" work\n');
+  expect(bench.instruments).toEqual({ load: description.instruments.load });
+  expect(bench.limits).toEqual(description.limits);
+  expect(bench.simulation).toBeUndefined();
+  expect(driver).toEqual(drivers.load);
+  const state = driver.readings['input-state'];
+  if (state?.kind !== 'flag' || driver.errors === 'none') throw new Error('the driver has lost something');
+  expect(['ON', 'ONE', '1', '0'].map((reply) => state.trueWhen.finds(reply))).toEqual([
+    true,
+    false,
+    true,
+    false,
+  ]);
+  expect(driver.errors.clear.finds('+0,"No error"')).toBe(true);
+});
