@@ -111,16 +111,20 @@ const simulatedInstrument = camelKeys(
 const faultNames = [
   'load-silent',
   'meter-silent',
+  'load-restarted',
+  'meter-restarted',
   'load-stuck',
   'meter-stuck',
   'load-lost',
   'meter-lost',
   'scanner-silent',
   'scanner-lost',
+  'scanner-restarted',
   'scanner-stuck',
   'scanner-stuck-unnoticed',
   'thermometer-silent',
   'thermometer-lost',
+  'thermometer-restarted',
   'module-dead',
   'reversed',
   'meter-wrong-mode',
@@ -155,6 +159,9 @@ export const simulationSchema: z.ZodType<Simulation> = z
         z.strictObject({
           at: quantity('time', 'When, from the start.', { least: 0 }),
           what: choice(faultNames, 'What happens.'),
+          for: quantity('time', 'How long, where it passes; of what is silent, lost or restarted.', {
+            above: 0,
+          }).exactOptional(),
           of: name('The module it happens to.', ['K2']).exactOptional(),
         }),
       )
@@ -172,6 +179,15 @@ export const simulationSchema: z.ZodType<Simulation> = z
     }
     if (circuit !== 'single' && modules.length < 2) {
       complain(['modules'], `a ${circuit} circuit has at least two modules; found ${modules.length}`);
+    }
+    for (const [index, fault] of simulation.faults.entries()) {
+      const passes = /-(silent|lost|restarted)$/.test(fault.what);
+      if (fault.for !== undefined && !passes) {
+        complain(['faults', index, 'for'], `${fault.what} does not pass: leave out 'for'`);
+      }
+      if (fault.for === undefined && fault.what.endsWith('-restarted')) {
+        complain(['faults', index], `${fault.what} needs a 'for': how long it is away`);
+      }
     }
     for (const [index, module] of modules.entries()) {
       if (modules.findIndex((other) => other.name === module.name) < index) {

@@ -64,7 +64,10 @@ export interface SimulatedError {
 }
 
 export type FaultName =
+  /** It neither answers nor obeys; or its connection drops and can't be opened. */
   | `${'load' | 'meter' | 'scanner' | 'thermometer'}-${'silent' | 'lost'}`
+  /** Its power goes and comes again: lost for as long, and it has forgotten all that it was told. */
+  | `${'load' | 'meter' | 'scanner' | 'thermometer'}-restarted`
   /** Answers each question for a reading with what it last answered to it, whatever is there. */
   | `${'load' | 'meter'}-stuck`
   | 'module-dead'
@@ -84,6 +87,8 @@ export type FaultName =
 export interface SimulatedFault {
   readonly at: Seconds;
   readonly what: FaultName;
+  /** How long it lasts, where it passes: of what is silent, lost or restarted. For good when left out. */
+  readonly for?: Seconds;
   /** The module it happens to, or whose own meter; the first, or every one of them, when left out. */
   readonly of?: string;
 }

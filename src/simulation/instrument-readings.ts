@@ -129,7 +129,7 @@ export class InstrumentReadings {
 
   /** A broken lead touches nothing, wherever it is held. */
   #place({ at }: Moment): MeterPlace {
-    return at >= this.#brokenFrom ? { kind: 'apart' } : this.#probes.placeOf(this.#post);
+    return at >= this.#brokenFrom ? { kind: 'apart' } : this.#probes.placeOf(this.#post, at);
   }
 
   #swapped(place: MeterPlace, at: Seconds): boolean {

@@ -2,6 +2,7 @@ import type { Clock } from '../clock/clock.js';
 import { type BenchDrivers, type Group, isPost, type Post, roleOf } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
 import type { Simulation } from '../files/simulation-section.js';
+import { InstrumentUnreachableError } from '../instrument/connection-errors.js';
 import type { Connection } from '../instrument/connection.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { dialectFor } from './dialects/choose-dialect.js';
@@ -24,6 +25,7 @@ export interface OpenedSimulation {
   /**
    * A line to one instrument, which is made by the first line to it. `dialect` names a way of speaking.
    * @throws NotUnderstoodBySimulationError, UnknownDialectError, CannotSimulateError
+   * @throws InstrumentUnreachableError while a fault keeps it from being reached
    */
   connect(post: string, driver: Driver, dialect?: string): Connection;
   /** The instrument itself, to be served on another line. */
@@ -73,12 +75,11 @@ export function openSimulation(facts: {
     instrument,
     connect: (post, driver, dialectName) => {
       const reached = instrument(post, driver, dialectName);
-      return new SimulatedConnection({
-        address: `simulated:${reached.dialect}`,
-        instrument: reached,
-        clock,
-        began,
-      });
+      const address = `simulated:${reached.dialect}`;
+      if (reached.isGoneAt(clock.now() - began)) {
+        throw new InstrumentUnreachableError({ address, reason: 'the simulated instrument is gone' });
+      }
+      return new SimulatedConnection({ address, instrument: reached, clock, began });
     },
   };
 }
@@ -104,7 +105,8 @@ function worldOf(simulation: Simulation, load: Driver, random: Random): VirtualB
 
 function worldFaults({ circuit, faults }: Simulation): readonly WorldFault[] {
   const ofTheWorld = faults.filter(
-    (fault): fault is WorldFault => fault.what === 'module-dead' || fault.what === 'reversed',
+    (fault): fault is WorldFault =>
+      fault.what === 'module-dead' || fault.what === 'reversed' || fault.what === 'load-restarted',
   );
   if (circuit !== 'single' && ofTheWorld.some(({ what, of }) => what === 'reversed' && of !== undefined)) {
     throw new CannotSimulateError({

@@ -1,5 +1,6 @@
 import type { Group, Post } from '../files/bench.js';
 import type { Simulation } from '../files/simulation-section.js';
+import type { Seconds } from '../quantity/quantity.js';
 
 /** Where the two probes of a meter are. */
 export type ProbePlace =
@@ -22,14 +23,15 @@ const output: ProbePlace = { kind: 'output' };
  * has put its probes, else where the scanner puts it, else across the output of the whole.
  */
 export class Probes {
-  readonly #simulation: Pick<Simulation, 'circuit' | 'modules'>;
+  readonly #simulation: Pick<Simulation, 'circuit' | 'modules' | 'faults'>;
   readonly #group: Group | undefined;
   readonly #scanned: boolean;
   #hand: ProbePlace | undefined;
   #closed: readonly number[] = [];
+  #closedAt: Seconds = 0;
 
   constructor(facts: {
-    readonly simulation: Pick<Simulation, 'circuit' | 'modules'>;
+    readonly simulation: Pick<Simulation, 'circuit' | 'modules' | 'faults'>;
     readonly group: Group | undefined;
     readonly scanned: boolean;
   }) {
@@ -43,25 +45,33 @@ export class Probes {
     this.#hand = place;
   }
 
-  /** The relays that the scanner holds closed. */
-  close(channels: readonly number[]): void {
+  /** The relays that the scanner holds closed from a moment on, for as long as it has power. */
+  close(channels: readonly number[], at: Seconds): void {
     this.#closed = channels;
+    this.#closedAt = at;
   }
 
-  /** Where the meter at a post has its probes now. */
-  placeOf(post: Post): MeterPlace {
+  /** Where the meter at a post has its probes at a moment. */
+  placeOf(post: Post, at: Seconds): MeterPlace {
     if (post !== 'meter') return this.#tap(Number(post.slice('meter-'.length)));
     if (this.#hand !== undefined) return this.#hand;
-    return this.#scanned ? this.#throughScanner() : output;
+    return this.#scanned ? this.#throughScanner(at) : output;
   }
 
-  #throughScanner(): MeterPlace {
+  #throughScanner(at: Seconds): MeterPlace {
     const [channel, ...others] = this.#closed;
-    if (channel === undefined) return apart;
+    if (channel === undefined || this.#hasLetGo(at)) return apart;
     if (others.length > 0) return { kind: 'tied' };
     if (channel === this.#group?.outputChannel) return output;
     const index = this.#group?.places.findIndex((place) => place.channel === channel) ?? -1;
     return index === -1 ? apart : this.#tap(index + 1);
+  }
+
+  /** The scanner lost its power since it closed what it holds. */
+  #hasLetGo(at: Seconds): boolean {
+    return this.#simulation.faults.some(
+      (fault) => fault.what === 'scanner-restarted' && fault.at > this.#closedAt && fault.at <= at,
+    );
   }
 
   /** Across the ballast in a group, across the module's output in a stack. */

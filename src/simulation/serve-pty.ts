@@ -2,6 +2,7 @@ import { spawn, type ChildProcess } from 'node:child_process';
 import { once } from 'node:events';
 import { constants, existsSync } from 'node:fs';
 import { type FileHandle, open } from 'node:fs/promises';
+import { connect } from 'node:net';
 import type { Clock } from '../clock/clock.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { LOOPBACK } from './serve-tcp.js';
@@ -16,12 +17,46 @@ export interface ServedPty {
   close(): Promise<void>;
 }
 
+interface PtyPlace {
+  readonly port: number;
+  readonly link: string;
+  readonly clock: Clock;
+}
+
 /**
- * Puts a loopback TCP port on a pseudo terminal at `link`, so that it can be opened as a serial port.
+ * Puts a loopback TCP port on a pseudo terminal at `link`, so that it can be opened as a serial port. While the
+ * port is away, as that of an instrument that is lost, the pseudo terminal is away too.
  * @throws CannotServeError with advice when socat is missing or fails.
  */
-export async function serveOnPty(facts: { port: number; link: string; clock: Clock }): Promise<ServedPty> {
-  const { port, link, clock } = facts;
+export async function serveOnPty(place: PtyPlace): Promise<ServedPty> {
+  const closing = new AbortController();
+  let line = await openPty(place);
+  const comeAndGo = async (): Promise<void> => {
+    while (!closing.signal.aborted) {
+      await exited(line.socat);
+      await line.close();
+      while (!(await listens(place.port))) await place.clock.sleep(LOOK_EVERY, closing.signal);
+      closing.signal.throwIfAborted();
+      line = await openPty(place);
+    }
+    await line.close();
+  };
+  // What can't be opened again stays away; being closed ends the waiting.
+  const life = comeAndGo().catch(() => undefined);
+  return {
+    close: async () => {
+      closing.abort();
+      await line.close();
+      await life;
+    },
+  };
+}
+
+interface OpenPty extends ServedPty {
+  readonly socat: ChildProcess;
+}
+
+async function openPty({ port, link, clock }: PtyPlace): Promise<OpenPty> {
   const escaped = link.replace(/[\\,:!"'([{]/g, '\\$&');
   const socat = spawn('socat', ['-d', '-d', `pty,raw,echo=0,link=${escaped}`, `tcp:${LOOPBACK}:${port}`], {
     stdio: ['ignore', 'ignore', 'pipe'],
@@ -32,11 +67,23 @@ export async function serveOnPty(facts: { port: number; link: string; clock: Clo
     throw cause;
   });
   return {
+    socat,
     close: async () => {
       await held.close();
       await ended(socat);
     },
   };
+}
+
+function listens(port: number): Promise<boolean> {
+  return new Promise((resolve) => {
+    const socket = connect({ host: LOOPBACK, port });
+    const said = (yes: boolean) => (): void => {
+      socket.destroy();
+      resolve(yes);
+    };
+    socket.once('connect', said(true)).once('error', said(false));
+  });
 }
 
 /** While somebody has it open, the pty outlives the programs that open and close it one after the other. */
@@ -79,8 +126,12 @@ function lastLine(complaint: string): string {
 }
 
 async function ended(child: ChildProcess): Promise<void> {
-  if (child.pid === undefined || child.exitCode !== null || child.signalCode !== null) return;
-  const exit = once(child, 'exit');
+  const exit = exited(child);
   child.kill();
   await exit;
+}
+
+async function exited(child: ChildProcess): Promise<void> {
+  if (child.pid === undefined || child.exitCode !== null || child.signalCode !== null) return;
+  await once(child, 'exit');
 }

@@ -10,6 +10,8 @@ import type { VirtualInstrument } from './virtual-instrument.js';
 /** Only this machine can reach a simulated instrument. */
 export const LOOPBACK = '127.0.0.1';
 
+const lookEvery: Seconds = 0.05;
+
 export interface TcpPlace {
   readonly instrument: VirtualInstrument;
   readonly clock: Clock;
@@ -30,7 +32,6 @@ export interface ServedPort {
  * @throws CannotServeError when the port is taken or not allowed.
  */
 export async function serveOnTcp(place: TcpPlace): Promise<ServedPort> {
-  const { instrument, clock, began } = place;
   const closing = new AbortController();
   const sockets = new Set<Socket>();
   const server = createServer({ allowHalfOpen: true, noDelay: true }, (socket) => {
@@ -39,22 +40,49 @@ export async function serveOnTcp(place: TcpPlace): Promise<ServedPort> {
     void converse(socket, place);
   });
   const port = await listening(server, place.port);
-  const hangUp = (): void => {
+  const hangUp = async (): Promise<void> => {
+    const closed = server.listening ? once(server, 'close') : undefined;
     server.close();
     for (const socket of sockets) socket.destroy();
+    await closed;
   };
-  if (Number.isFinite(instrument.lostFrom)) {
-    clock.sleep(instrument.lostFrom - (clock.now() - began), closing.signal).then(hangUp, () => undefined);
-  }
+  const life = goneNowAndThen(place, { hangUp, back: () => listening(server, port) }, closing.signal);
   return {
     port,
     close: async () => {
       closing.abort();
-      const closed = server.listening || sockets.size > 0 ? once(server, 'close') : undefined;
-      hangUp();
-      await closed;
+      await life;
+      await hangUp();
     },
   };
+}
+
+/** Hangs up when the instrument is gone, and is back on the same port when it is. Never rejects. */
+async function goneNowAndThen(
+  { instrument, clock, began }: TcpPlace,
+  line: { readonly hangUp: () => Promise<void>; readonly back: () => Promise<unknown> },
+  closing: AbortSignal,
+): Promise<void> {
+  const until = (moment: Seconds): Promise<void> => clock.sleep(moment - (clock.now() - began), closing);
+  try {
+    for (const spell of instrument.gone) {
+      if (!Number.isFinite(spell.from)) return;
+      await until(spell.from);
+      await line.hangUp();
+      if (!Number.isFinite(spell.until)) return;
+      await until(spell.until);
+      // Somebody may have taken the port meanwhile; it is not theirs for long.
+      while (
+        !(await line.back().then(
+          () => true,
+          () => false,
+        ))
+      )
+        await clock.sleep(lookEvery, closing);
+    }
+  } catch {
+    // The bench is being closed.
+  }
 }
 
 async function listening(server: Server, port: number): Promise<number> {

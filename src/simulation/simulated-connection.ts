@@ -22,6 +22,8 @@ export class SimulatedConnection implements Connection {
   readonly #began: Seconds;
   readonly #splitter = new MessageSplitter();
   readonly #underway: { readonly due: Seconds; readonly bytes: Uint8Array }[] = [];
+  /** When it drops: at the first fault that does so after it was opened. */
+  readonly #lostFrom: Seconds;
   #closed = false;
 
   constructor(facts: { address: string; instrument: VirtualInstrument; clock: Clock; began: Seconds }) {
@@ -29,11 +31,16 @@ export class SimulatedConnection implements Connection {
     this.#instrument = facts.instrument;
     this.#clock = facts.clock;
     this.#began = facts.began;
+    const opened = this.#now();
+    this.#lostFrom = Math.min(
+      Number.POSITIVE_INFINITY,
+      ...facts.instrument.gone.filter(({ until }) => until > opened).map(({ from }) => from),
+    );
   }
 
   write(bytes: Uint8Array): Promise<void> {
     const now = this.#now();
-    if (this.#closed || now >= this.#instrument.lostFrom - SAME_MOMENT) return Promise.reject(this.#lost());
+    if (this.#closed || now >= this.#lostFrom - SAME_MOMENT) return Promise.reject(this.#lost());
     for (const incoming of this.#splitter.feed(bytes)) {
       const { reply, readyAt } = this.#instrument.hear(incoming, now);
       if (reply !== undefined) {
@@ -50,10 +57,10 @@ export class SimulatedConnection implements Connection {
       const arrived = this.#takeArrived();
       if (arrived !== undefined) return arrived;
       const now = this.#now();
-      if (now >= this.#instrument.lostFrom - SAME_MOMENT) throw this.#lost();
+      if (now >= this.#lostFrom - SAME_MOMENT) throw this.#lost();
       if (now >= deadline - SAME_MOMENT) return undefined;
       const due = this.#underway[0]?.due ?? Number.POSITIVE_INFINITY;
-      await this.#clock.sleep(Math.min(due, this.#instrument.lostFrom, deadline) - now);
+      await this.#clock.sleep(Math.min(due, this.#lostFrom, deadline) - now);
     }
   }
 
@@ -69,7 +76,7 @@ export class SimulatedConnection implements Connection {
 
   #takeArrived(): Uint8Array | undefined {
     const now = this.#now() + SAME_MOMENT;
-    const still = this.#underway.findIndex(({ due }) => due > now || due > this.#instrument.lostFrom);
+    const still = this.#underway.findIndex(({ due }) => due > now || due > this.#lostFrom);
     const arrived = this.#underway.splice(0, still === -1 ? this.#underway.length : still);
     return arrived.length === 0 ? undefined : Buffer.concat(arrived.map(({ bytes }) => bytes));
   }

@@ -16,7 +16,7 @@ export type StepListener = (before: Moment, after: Moment) => void;
 
 /** What goes wrong with the module or its wires by itself, at a time. */
 export interface WorldFault extends SimulatedFault {
-  readonly what: 'module-dead' | 'reversed';
+  readonly what: 'module-dead' | 'reversed' | 'load-restarted';
 }
 
 export type InputState = 'present' | 'absent' | 'dead';
@@ -156,6 +156,9 @@ export class VirtualBench {
         case 'reversed':
           this.#reversed = true;
           this.#takeLoad(this.#load);
+          break;
+        case 'load-restarted':
+          this.#takeLoad(loadAtRest);
       }
     });
   }

@@ -2,7 +2,7 @@ import type { Post } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
 import type { Seconds } from '../quantity/quantity.js';
 import type { Dialect, Interpreter, MeterMode } from './dialects/dialect.js';
-import { faultTime } from './instrument-faults.js';
+import { faultTime, isOn, type Spell, spellsOf } from './instrument-faults.js';
 import { type InstrumentFacts, InstrumentReadings } from './instrument-readings.js';
 import type { Incoming } from './message-splitter.js';
 import type { Probes } from './probes.js';
@@ -27,8 +27,11 @@ export class VirtualInstrument {
   readonly post: Post;
   /** The name of its way of speaking. */
   readonly dialect: string;
-  readonly lostFrom: Seconds;
-  readonly #silentFrom: Seconds;
+  /** When its connections drop, and nobody can open one. */
+  readonly gone: readonly Spell[];
+  readonly #silent: readonly Spell[];
+  /** When it loses its power next; those that it has lived through are gone from here. */
+  readonly #restarts: Spell[];
   /** When it begins to repeat its last readings. */
   readonly #stuckFrom: Seconds;
   /** The last reading of each quantity, for one that is stuck. */
@@ -36,7 +39,9 @@ export class VirtualInstrument {
   readonly #bench: VirtualBench;
   readonly #probes: Probes;
   readonly #replyEnd: string;
-  readonly #interpreter: Interpreter;
+  readonly #dialect: Dialect;
+  readonly #driver: Driver;
+  #interpreter: Interpreter;
   readonly #readings: InstrumentReadings;
   readonly #relays: Relays;
   #mode: MeterMode = 'voltage';
@@ -52,8 +57,11 @@ export class VirtualInstrument {
       faultTime(simulation, group, post, what);
     this.post = post;
     this.dialect = dialect.name;
-    this.lostFrom = fault(`${role}-lost`);
-    this.#silentFrom = fault(`${role}-silent`);
+    const spells = (...names: Parameters<typeof spellsOf>[3][]): readonly Spell[] =>
+      spellsOf(simulation, group, post, ...names);
+    this.gone = spells(`${role}-lost`, `${role}-restarted`);
+    this.#silent = spells(`${role}-silent`);
+    this.#restarts = [...spells(`${role}-restarted`)];
     this.#stuckFrom = role === 'load' || role === 'meter' ? fault(`${role}-stuck`) : Number.POSITIVE_INFINITY;
     this.#panelAt = fault('meter-wrong-mode');
     this.#bench = bench;
@@ -63,13 +71,20 @@ export class VirtualInstrument {
     const stuck = fault('scanner-stuck');
     const unnoticed = fault('scanner-stuck-unnoticed');
     this.#relays = new Relays({ from: Math.min(stuck, unnoticed), noticed: stuck <= unnoticed });
+    this.#dialect = dialect;
+    this.#driver = driver;
     this.#interpreter = this.#wake(dialect, driver);
+  }
+
+  isGoneAt(at: Seconds): boolean {
+    return isOn(this.gone, at);
   }
 
   /** Takes what has come in at a moment of the bench's time. A silent instrument neither answers nor obeys. */
   hear(incoming: Incoming, at: Seconds): Answer {
     this.#free = Math.max(this.#free, at);
-    if (this.#free >= this.#silentFrom) return { reply: undefined, readyAt: this.#free };
+    this.#liveThroughRestarts();
+    if (isOn(this.#silent, this.#free)) return { reply: undefined, readyAt: this.#free };
     if (this.#free >= this.#panelAt) {
       this.#mode = 'resistance';
       this.#panelAt = Number.POSITIVE_INFINITY;
@@ -131,9 +146,24 @@ export class VirtualInstrument {
     }
   }
 
+  /** It wakes as it did the first time; what a load does of that, the bench has seen to. */
+  #liveThroughRestarts(): void {
+    for (
+      let [next] = this.#restarts;
+      next !== undefined && next.from <= this.#free;
+      [next] = this.#restarts
+    ) {
+      this.#restarts.shift();
+      this.#mode = 'voltage';
+      this.#relays.open('all', next.from);
+      if (this.#dialect.role === 'scanner') this.#probes.close(this.#relays.closed, next.from);
+      this.#interpreter = this.#wake(this.#dialect, this.#driver);
+    }
+  }
+
   #relaysMoved(): void {
     this.#free += RELAY_TIME;
-    this.#probes.close(this.#relays.closed);
+    this.#probes.close(this.#relays.closed, this.#free);
   }
 
   /** A reading takes its time, be it an old one. */

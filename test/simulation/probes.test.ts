@@ -10,11 +10,11 @@ const group: Group = {
 };
 const modules = [module('K1', 12.3), module('K2', 12.3)];
 const probes = (circuit: 'single' | 'parallel' | 'series', scanned: boolean): Probes =>
-  new Probes({ simulation: { circuit, modules }, group, scanned });
+  new Probes({ simulation: { circuit, modules, faults: [] }, group, scanned });
 
 describe('the probes of the meter', () => {
   it('are at the output of the whole where nothing else puts them elsewhere', () => {
-    expect(probes('parallel', false).placeOf('meter')).toEqual({ kind: 'output' });
+    expect(probes('parallel', false).placeOf('meter', 0)).toEqual({ kind: 'output' });
   });
 
   it.each([
@@ -22,31 +22,31 @@ describe('the probes of the meter', () => {
     ['series', 'output-of'],
   ] as const)('are where the scanner of a %s circuit has them: %s', (circuit, kind) => {
     const scanned = probes(circuit, true);
-    expect(scanned.placeOf('meter')).toEqual({ kind: 'apart' });
-    scanned.close([102]);
-    expect(scanned.placeOf('meter')).toEqual({ kind, module: 'K2' });
-    scanned.close([110]);
-    expect(scanned.placeOf('meter')).toEqual({ kind: 'output' });
-    scanned.close([7]);
-    expect(scanned.placeOf('meter')).toEqual({ kind: 'apart' });
-    scanned.close([101, 102]);
-    expect(scanned.placeOf('meter')).toEqual({ kind: 'tied' });
+    expect(scanned.placeOf('meter', 0)).toEqual({ kind: 'apart' });
+    scanned.close([102], 0);
+    expect(scanned.placeOf('meter', 0)).toEqual({ kind, module: 'K2' });
+    scanned.close([110], 0);
+    expect(scanned.placeOf('meter', 0)).toEqual({ kind: 'output' });
+    scanned.close([7], 0);
+    expect(scanned.placeOf('meter', 0)).toEqual({ kind: 'apart' });
+    scanned.close([101, 102], 0);
+    expect(scanned.placeOf('meter', 0)).toEqual({ kind: 'tied' });
   });
 
   it('are where a hand holds them, scanner or not, until it puts them back', () => {
     const held = probes('parallel', true);
-    held.close([101]);
+    held.close([101], 0);
     held.move({ kind: 'together' });
-    expect(held.placeOf('meter')).toEqual({ kind: 'together' });
+    expect(held.placeOf('meter', 0)).toEqual({ kind: 'together' });
     held.move(undefined);
-    expect(held.placeOf('meter')).toEqual({ kind: 'ballast-of', module: 'K1' });
+    expect(held.placeOf('meter', 0)).toEqual({ kind: 'ballast-of', module: 'K1' });
   });
 
   it('of the own meters stay at their places, whatever hand or scanner do', () => {
     const own = probes('series', true);
-    own.close([110]);
+    own.close([110], 0);
     own.move({ kind: 'apart' });
-    expect(own.placeOf('meter-2')).toEqual({ kind: 'output-of', module: 'K2' });
-    expect(own.placeOf('meter-3')).toEqual({ kind: 'apart' });
+    expect(own.placeOf('meter-2', 0)).toEqual({ kind: 'output-of', module: 'K2' });
+    expect(own.placeOf('meter-3', 0)).toEqual({ kind: 'apart' });
   });
 });
