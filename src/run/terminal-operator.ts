@@ -40,7 +40,7 @@ export class TerminalOperator implements Operator {
       return '--yes';
     }
     const answer = await this.#question('Understood and taken care of? Type yes: ', signal);
-    return /^\s*y(es)?\s*$/i.test(answer) ? 'operator' : 'refused';
+    return /^y(es)?$/i.test(answer.trim()) ? 'operator' : 'refused';
   }
 
   async ask({ text, answer }: OperatorRequest, signal: AbortSignal): Promise<string> {
@@ -51,7 +51,7 @@ export class TerminalOperator implements Operator {
   /** Only Enter, or a word that says so, means done: whoever types "wait" must not be taken at another word. */
   async #untilDone(text: string, signal: AbortSignal): Promise<'done'> {
     let question = `\n${text}\nPress Enter when it is done. `;
-    while (!/^\s*(done|y|yes)?\s*$/i.test(await this.#question(question, signal))) {
+    while (!/^(done|y|yes)?$/i.test((await this.#question(question, signal)).trim())) {
       question = 'Not done, then. Press Enter when it is; Ctrl-C stops and leaves the load off. ';
     }
     return 'done';

@@ -24,7 +24,8 @@ export function numberParameter(
 ): { value: number } | { error: number } {
   if (/^MIN(IMUM)?$/i.test(text)) return { value: least };
   if (/^MAX(IMUM)?$/i.test(text)) return { value: most };
-  const [, digits, suffix = ''] = /^([+-]?(?:\d+\.?\d*|\.\d+)(?:E[+-]?\d+)?)\s*([A-Z]*)$/i.exec(text) ?? [];
+  const [, digits, suffix = ''] =
+    /^([+-]?(?:\d+(?:\.\d*)?|\.\d+)(?:E[+-]?\d+)?)\s*([A-Z]*)$/i.exec(text) ?? [];
   if (digits === undefined) return { error: ScpiErrorNumber.dataType };
   const upper = suffix.toUpperCase();
   const multiplier =

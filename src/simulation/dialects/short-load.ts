@@ -41,12 +41,12 @@ const phrases: readonly Phrase[] = [
   { form: /^CUR\?$/i, perform: (hands) => answer(`${hands.measure('current').toFixed(DECIMALS)}A`) },
   { form: /^VOL\?$/i, perform: (hands) => answer(`${hands.measure('voltage').toFixed(DECIMALS)}V`) },
   {
-    form: /^CUR (\d+\.?\d*|\.\d+)$/i,
+    form: /^CUR (\d+(?:\.\d*)?|\.\d+)$/i,
     perform: (hands, value) =>
       within(Number(value), hands.most.current, () => set(hands, { setCurrent: Number(value) })),
   },
   {
-    form: /^VOL (\d+\.?\d*|\.\d+)$/i,
+    form: /^VOL (\d+(?:\.\d*)?|\.\d+)$/i,
     perform: (hands, value) =>
       within(Number(value), hands.most.voltage, () => set(hands, { setVoltage: Number(value) })),
   },

@@ -60,3 +60,11 @@ describe('a number that is sent by an instrument', () => {
     );
   });
 });
+
+it('a number as long as the input buffer is refused without trying every way to read it', () => {
+  const text = `${'0'.repeat(65_536)}!`;
+  const began = process.cpuUsage();
+  expect(numberParameter(text, { unit: 'A', least: 0, most: 8 })).toEqual({ error: -104 });
+  const { user, system } = process.cpuUsage(began);
+  expect((user + system) / 1e6).toBeLessThan(2);
+});
