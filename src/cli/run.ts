@@ -1,5 +1,6 @@
 import { join } from 'node:path';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import { printable } from '../quantity/printable.js';
 import { jsonText } from '../report/json-text.js';
 import { needsOperator } from '../run/plan-circuit.js';
 import { OperatorAbsentError } from '../run/stopped.js';
@@ -56,13 +57,17 @@ export async function run(options: RunOptions, streams: Streams): Promise<ExitCo
 function tell(performed: PlanPerformed, json: boolean, streams: Streams): ExitCode {
   const { understood, ending, safety, folder, status } = performed;
   if (understood.kind === 'result') streams.stdout.write(shown(understood.result, json, streams));
-  streams.stderr.write(`record: ${folder.path}\n`);
+  streams.stderr.write(`record: ${printable(folder.path)}\n`);
   if (ending.how !== 'completed') streams.stderr.write(`${errorText(ending.error)}\n`);
   if (understood.kind === 'error') streams.stderr.write(`${errorText(understood.error)}\n`);
+  if (understood.kind === 'result' && understood.unkept !== undefined) {
+    const missing = printable(understood.unkept.message);
+    streams.stderr.write(`${missing}; the journal holds it all, and \`railproof analyse\` shows it.\n`);
+  }
   if (understood.kind === 'result') streams.stderr.write(resumeHint(folder.path, understood.result));
   if (safety.kind === 'unconfirmed') {
     streams.stderr.write(
-      `\nIt could not be confirmed that the load is off: ${safety.why}\n${safety.advice}\n`,
+      `\nIt could not be confirmed that the load is off: ${printable(safety.why)}\n${safety.advice}\n`,
     );
   } else {
     streams.stderr.write('The load is off; it was read back.\n');
