@@ -67,6 +67,12 @@ export class VirtualBench {
     return this.#load;
   }
 
+  /** As it is at a moment, whatever has befallen it until then. */
+  loadAt(at: Seconds): LoadState {
+    this.#carryOn(at);
+    return this.#load;
+  }
+
   /**
    * A module's input: `dead` is a fault that nobody can undo.
    * @throws UnknownModuleError

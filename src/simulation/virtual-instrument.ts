@@ -107,7 +107,7 @@ export class VirtualInstrument {
             current: ratings.current ?? USUAL_RANGE.current,
             voltage: ratings.voltage ?? USUAL_RANGE.voltage,
           },
-          state: () => this.#bench.load,
+          state: () => this.#bench.loadAt(this.#free),
           set: (change) => {
             this.#bench.setLoad(change, this.#free);
           },
