@@ -12,6 +12,7 @@
  */
 export { loadBaseline, type LoadedBaseline } from './cli/baseline.js';
 export { loadPlan, type LoadedPlan } from './cli/load-plan.js';
+export { loadResumed, type ResumedPlan } from './cli/resume-plan.js';
 export { performPlan, type PlanPerformed } from './cli/perform-plan.js';
 export { worldOf, vocabulary, type World } from './cli/wiring.js';
 export { RailproofError, exitCodes, type ExitCode } from './errors/railproof-error.js';

@@ -20,12 +20,13 @@ export function runs(
   const listed: object[] = [];
   for (const name of names) {
     const entry = entryOf(join(wanted.folder, name));
-    const { ended, outcome, recommended } = entry;
+    const { ended, outcome, recommended, resumedFrom } = entry;
     rows.push([
       printable(name),
       printable(ended),
       printable(outcome),
       recommended === null ? '' : formatQuantity(recommended, 'current', { significant: 3 }),
+      resumedFrom === null ? '' : `goes on with ${printable(resumedFrom)}`,
     ]);
     listed.push({ run: name, ...entry });
   }
@@ -34,8 +35,10 @@ export function runs(
   } else if (rows.length === 0) {
     streams.stdout.write(`No records in ${printable(wanted.folder)}.\n`);
   } else {
-    const head = ['record', 'ended', 'outcome', 'recommended'];
-    streams.stdout.write(`${alignTable([head, ...rows], ['left', 'left', 'left', 'right']).join('\n')}\n`);
+    const head = ['record', 'ended', 'outcome', 'recommended', ''];
+    streams.stdout.write(
+      `${alignTable([head, ...rows], ['left', 'left', 'left', 'right', 'left']).join('\n')}\n`,
+    );
   }
   return exitCodes.conforms;
 }
@@ -68,11 +71,14 @@ interface Entry {
   readonly outcome: string;
   /** In amperes; null where there is none. */
   readonly recommended: number | null;
+  /** The earlier record whose first steps it took over; null where it began afresh. */
+  readonly resumedFrom: string | null;
 }
 
 const summary = z.object({
   ended: z.string(),
   outcome: z.string(),
+  takenOver: z.array(z.object({ run: z.string() })).optional(),
   findings: z.array(z.object({ name: z.string(), value: z.union([z.number(), z.string()]) })),
 });
 
@@ -86,13 +92,18 @@ function entryOf(path: string): Entry {
     text = readWhole(runFolderAt(path).findings);
   } catch (error) {
     const missing = (error as NodeJS.ErrnoException).code === 'ENOENT';
-    return { ended: missing ? 'cut-off' : 'unreadable', outcome: '', recommended: null };
+    return { ended: missing ? 'cut-off' : 'unreadable', outcome: '', recommended: null, resumedFrom: null };
   }
   const parsed = summary.safeParse(parseJson(text));
-  if (!parsed.success) return { ended: 'unreadable', outcome: '', recommended: null };
-  const { ended, outcome, findings } = parsed.data;
+  if (!parsed.success) return { ended: 'unreadable', outcome: '', recommended: null, resumedFrom: null };
+  const { ended, outcome, findings, takenOver } = parsed.data;
   const recommended = findings.find((finding) => finding.name === 'recommended-current')?.value;
-  return { ended, outcome, recommended: typeof recommended === 'number' ? recommended : null };
+  return {
+    ended,
+    outcome,
+    recommended: typeof recommended === 'number' ? recommended : null,
+    resumedFrom: takenOver?.at(-1)?.run ?? null,
+  };
 }
 
 function parseJson(text: string): unknown {

@@ -81,6 +81,10 @@ describe('railproof run --resume', () => {
     });
     expect(readdirSync(runs)).toHaveLength(3);
     expect(status).toBe(0);
+    const listed = await railproof('runs', runs);
+    expect(listed.stdout.match(/ {2}goes on with .*K1-quick-look$/gm)).toEqual([
+      `  goes on with ${broken.split('/').at(-1) ?? ''}`,
+    ]);
   });
 
   it('--dry-run shows what is done and what is left, and makes no record', async () => {
