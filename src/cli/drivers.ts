@@ -62,6 +62,7 @@ async function tryOut(name: string, address: string, json: boolean, streams: Str
   const connection = await connectors(realClock)(parseAddress(address), driver, driver.role);
   const results: TrialResult[] = [];
   const stop = stopOnSignals(streams);
+  stop.hurry.addEventListener('abort', () => void connection.close(), { once: true });
   let ending: Ending = { how: 'as-it-should' };
   try {
     if (!json) streams.stderr.write(`${driver.name} at ${printable(connection.address)}\n`);
@@ -71,7 +72,7 @@ async function tryOut(name: string, address: string, json: boolean, streams: Str
     }
     if (stop.signal.aborted) ending = { how: 'stopped', error: stop.signal.reason };
   } catch (error) {
-    ending = { how: 'broken-off', error };
+    ending = { how: 'broken-off', error: stop.signal.aborted ? stop.signal.reason : error };
   } finally {
     await connection.close();
     stop.release();

@@ -1,20 +1,28 @@
+import { Connections } from '../bench/connections.js';
 import { loadMayStillBeOn, makeSafeUnopened } from '../bench/make-safe.js';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { readBench } from '../files/read-bench.js';
 import { printable } from '../quantity/printable.js';
 import { errorText } from './error-text.js';
+import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
 import { planDrivers, readBenchDrivers, worldOf } from './wiring.js';
 
 /**
  * `railproof safe`: the load of a bench off, and read back. Unless that is confirmed the last words are what
- * to do by hand, whatever it was that failed.
+ * to do by hand, whatever it was that failed. Whoever wants it to end has to wait until the load was told; a
+ * second wish ends the wait for an answer, and the load is told again over a new connection.
  */
 export async function safe(wanted: { readonly bench: string }, streams: Streams): Promise<ExitCode> {
+  const stop = stopOnSignals(streams);
   try {
     const file = await readBench(wanted.bench);
     const drivers = planDrivers(await readBenchDrivers(file));
-    const { connect, clock } = await worldOf(file.value, drivers);
+    const world = await worldOf(file.value, drivers);
+    const { clock } = world;
+    const connections = new Connections(world.connect);
+    stop.hurry.addEventListener('abort', () => void connections.giveUp(), { once: true });
+    const { connect } = connections;
     const { safety, address } = await makeSafeUnopened({ bench: file.value, drivers, connect, clock });
     if (safety.kind === 'confirmed') {
       streams.stdout.write(`The load at ${printable(address)} is off; it was read back.\n`);
@@ -27,5 +35,7 @@ export async function safe(wanted: { readonly bench: string }, streams: Streams)
   } catch (error) {
     streams.stderr.write(`${errorText(error)}\n${loadMayStillBeOn}\n`);
     return exitCodeOf(error);
+  } finally {
+    stop.release();
   }
 }

@@ -65,7 +65,8 @@ export class TerminalOperator implements Operator {
   #fitted(text: string): string {
     const { columns } = this.#terminal.output;
     const said = printableLines(text);
-    return columns === undefined ? said : wordWrap(said, Math.min(columns, widestText));
+    // A terminal that nobody told its size has no columns at all.
+    return columns === undefined || columns === 0 ? said : wordWrap(said, Math.min(columns, widestText));
   }
 
   /** At the end of the input a question would never be answered, so that is taken as a wish to stop. */

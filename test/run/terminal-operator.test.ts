@@ -78,6 +78,15 @@ describe('an act on a terminal', () => {
     expect(shown()).toBe('\nHow warm is it?\n> ');
   });
 
+  it('is asked for in whole lines on a terminal that does not know its width', async () => {
+    const { input, output, operator, shown } = terminal();
+    Object.assign(output, { columns: 0 });
+    const asked = operator.ask({ name: 'plug', text: 'Plug K1 in.', answer: 'done' }, never);
+    input.write('\n');
+    expect(await asked).toBe('done');
+    expect(shown()).toContain('Plug K1 in.\nPress Enter when it is done.');
+  });
+
   it('can be followed by another on the same terminal', async () => {
     const { input, operator } = terminal();
     for (const answer of ['one', 'two', 'three']) {
