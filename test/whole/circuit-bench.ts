@@ -170,6 +170,7 @@ export async function runCircuit(
       runs,
       operator: simulatedOperator(world.simulation),
       signal: new AbortController().signal,
+      hurry: new AbortController().signal,
       watch: nobodyWatches,
     },
   );

@@ -31,6 +31,7 @@ it('a recorded dialogue, replayed, gives the same findings to the last digit', a
       runs: join(folder, 'recorded'),
       operator: simulatedOperator(world.simulation),
       signal: new AbortController().signal,
+      hurry: new AbortController().signal,
       watch: nobodyWatches,
     },
   );

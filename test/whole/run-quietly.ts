@@ -38,6 +38,7 @@ export async function runQuietly(
     runs,
     operator: simulatedOperator(world.simulation),
     signal: new AbortController().signal,
+    hurry: new AbortController().signal,
     watch: nobodyWatches,
   });
   if (performed.understood.kind === 'error') throw performed.understood.error;

@@ -121,6 +121,7 @@ async function resultOf(procedure: string, bench: string, modules: readonly stri
     runs,
     operator: simulatedOperator(world.simulation),
     signal: new AbortController().signal,
+    hurry: new AbortController().signal,
     watch: nobodyWatches,
   });
   expect(safety).toEqual({ kind: 'confirmed' });
