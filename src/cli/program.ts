@@ -175,6 +175,6 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
 
 const exitStatusHelp = `
 Exit status: 0 conforms, or nothing to judge; 1 does not conform, or changed; 2 undecided; 3 stopped by a guard or by
-the operator; 64 usage; 65 bad file; 66 missing file; 69 instrument unreachable or lost; 70 a fault of ours;
-74 a file could not be written.
+the operator; 64 usage; 65 bad file; 66 missing file; 69 instrument unreachable or lost, or the load not confirmed to
+be off; 70 a fault of ours; 74 the record or the output could not be written.
 `;

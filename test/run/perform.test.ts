@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { RecordWriteError } from '../../src/record/record-error.js';
-import { StoppedByOperator } from '../../src/run/stopped.js';
+import { StoppedByOperator, UnforeseenError } from '../../src/run/stopped.js';
 import type { Operator } from '../../src/steps/operator.js';
 import { nobody } from '../steps/one-step.js';
 import { type Rehearsal, rehearse, tidyUp } from './rehearsal.js';
@@ -247,6 +247,19 @@ describe('a run that goes wrong ends with the load off and the record closed', (
     });
     expect(run.ending).toEqual({ how: 'failed', reason: 'undefined is not a function', error: fault });
     expect(run.inputs).toEqual(['on', 'off']);
+    expectSafeEnd(run);
+  });
+
+  it('when something of ours breaks while the load is put off at the end', async () => {
+    const stop = new AbortController();
+    const run = await rehearse({
+      steps: [ramp],
+      signal: stop.signal,
+      onEvent: (event) => {
+        if (event.event === 'input' && event.state === 'off') stop.abort(new UnforeseenError('a surprise'));
+      },
+    });
+    expect(run.ending).toMatchObject({ how: 'failed', error: { exitCode: 70 } });
     expectSafeEnd(run);
   });
 

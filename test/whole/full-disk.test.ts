@@ -70,7 +70,7 @@ describe.skipIf(noSmallDisks)('a disk that fills up in the middle of a million r
   it('leaves the load of a real line off, as the load itself says', async () => {
     const served = await serve(nursery, join(folder, 'served.yaml'), 'tcp');
     onTestFinished(() => served.close());
-    const { status, stderr, kept } = await onSmallDisk(folder, 'size=48k', (disk) =>
+    const { status, stderr, kept } = await onSmallDisk(folder, 'size=40k', (disk) =>
       run(million, join(disk, 'runs'), served.bench),
     );
     expect(stderr).toContain("journal.jsonl can't be written: the disk is full");
@@ -100,6 +100,19 @@ describe.skipIf(noSmallDisks)('a disk on which a record can not even be begun', 
     expect(status).toBe(74);
   });
 });
+
+it.skipIf(noSmallDisks)(
+  'a disk with no room for the table beside the journal fails nothing, and the user is told',
+  async () => {
+    const { status, stderr, kept } = await onSmallDisk(folder, 'nr_inodes=6', (disk) =>
+      run(short, join(disk, 'runs')),
+    );
+    expect(stderr).toMatch(/readings\.csv can't be written: the disk is full; the journal holds it all/);
+    expect(lastLine(stderr)).toBe(off);
+    expect(status).toBe(0);
+    expect(read(recordIn(kept)).integrity).toMatchObject({ kind: 'whole' });
+  },
+);
 
 it('a file that may not grow beyond a limit of the shell is a disk that is full, and no sudden end', async () => {
   const runs = join(folder, 'runs-limited');
