@@ -57,6 +57,18 @@ describe('a TCP connection', () => {
     await connection.close();
   });
 
+  it('takes for late nothing that came while this program was held up', async () => {
+    const address = await serveTcp((message, line) => {
+      line.say(message);
+      const heldUp = performance.now() + 100;
+      while (performance.now() < heldUp);
+    });
+    const connection = await openTcp(address);
+    onTestFinished(() => connection.close());
+    await connection.write(bytes('READ?\n'));
+    expect(Buffer.from((await connection.receive(0.05)) ?? []).toString()).toBe('READ?');
+  });
+
   it('gives all that was sent before it was lost', async () => {
     const connection = await openTcp(
       await serveTcp((_, line) => {
