@@ -14,7 +14,8 @@ export class NoWatchmanError extends RailproofError {
 
   constructor(why: string) {
     super(`the watchman, which switches the load off should this program vanish, can't be had: ${why}`, {
-      advice: 'make room for another process on this machine, in memory and in number, and run it again',
+      advice:
+        'find out what ends or hinders other programs on this machine (is there room for one more?), and run it again',
     });
   }
 }
