@@ -7,17 +7,18 @@ import { promised } from './promised-errors.js';
  * `recovery-time`: the slowest of the recoveries after an overload, from the load's going off to the
  * voltage's being back; between the last look without it and the first with it. How long the next one
  * takes differs by the spread of those seen: a module that tries again each period may have been unloaded
- * just before it tries, or just after. Of a module that stayed away it is at least as long as it was waited
+ * just before it tries, or just after. One across which a connection was lost was not timed, and
+ * counts only where there is no other. Of a module that stayed away it is at least as long as it was waited
  * for, so that it can fail a criterion and never pass one.
  */
 export function recoveryFindings(evidence: Evidence): readonly Finding[] {
   const away = stayedAway(evidence);
   if (away !== undefined) return [away];
-  const recoveries = evidence.steps.flatMap((step) =>
-    step.recoveries
-      .filter((recovery) => recovery.outcome === 'came-back')
-      .map(({ after, within }) => ({ step: step.step, after, within })),
+  const cameBack = evidence.steps.flatMap(({ step, recoveries }) =>
+    recoveries.filter(({ outcome }) => outcome === 'came-back').map((recovery) => ({ ...recovery, step })),
   );
+  const timed = cameBack.filter(({ untimed }) => untimed !== true);
+  const recoveries = timed.length > 0 ? timed : cameBack;
   const slowest = recoveries.reduce<(typeof recoveries)[number] | undefined>(
     (slow, one) => (slow === undefined || one.within > slow.within ? one : slow),
     undefined,

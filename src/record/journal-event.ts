@@ -164,6 +164,8 @@ export interface Recovery {
   readonly outcome: 'came-back' | 'stayed-off' | 'came-back-after-cycling';
   readonly after: Seconds;
   readonly within: Seconds;
+  /** A connection was lost meanwhile: it is between the two, but how long it took was not seen. */
+  readonly untimed?: true;
 }
 
 export interface Prompted {

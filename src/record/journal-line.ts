@@ -113,6 +113,7 @@ const shapeOf: Shapes = {
     outcome: isOneOf(['came-back', 'stayed-off', 'came-back-after-cycling']),
     after: isNumber,
     within: isNumber,
+    untimed: ifThere(isFlag),
   },
   prompt: { step: isCount, text: isText, act: ifThere(isText) },
   answer: {

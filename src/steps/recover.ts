@@ -20,6 +20,7 @@ export async function comeBack(
   patience: Seconds,
 ): Promise<CameBack> {
   const { bench, journal, operator, clock, step, underTest } = context;
+  const { gaps } = bench;
   const unloaded = clock.now();
   await bench.load.inputOff();
   const byItself = await waitForVoltage(points, unloaded, least, patience);
@@ -30,6 +31,7 @@ export async function comeBack(
       outcome: 'came-back',
       after: byItself.after,
       within: byItself.within,
+      ...(bench.gaps === gaps ? {} : { untimed: true }),
     });
     return 'came-back';
   }

@@ -26,6 +26,25 @@ describe('the recovery time', () => {
     expect(found?.value).toBeCloseTo(0.03, 12);
   });
 
+  it('leaves out one across which a connection was lost, as long as there is another', () => {
+    const untimed = {
+      event: 'recovery',
+      step: 1,
+      outcome: 'came-back',
+      after: 0,
+      within: 4,
+      untimed: true,
+    } as const;
+    const among = evidenceOf([
+      { kind: 'dropout-search', recoveries: [['came-back', 0.5, 0.7]], more: [untimed] },
+    ]);
+    const [found] = recoveryFindings(among);
+    expect(found).toMatchObject({ note: 'one recovery' });
+    expect(found?.value).toBeCloseTo(0.6, 12);
+    const [alone] = recoveryFindings(evidenceOf([{ kind: 'dropout-search', more: [untimed] }]));
+    expect(alone).toMatchObject({ value: 2, note: 'one recovery; back before the first look' });
+  });
+
   it('of a module that stayed off is at least what it was waited for, however quick it was before', () => {
     const [finding] = recoveryFindings(
       after(['came-back', 0, 0.1], ['stayed-off', 10, 10.02], ['came-back-after-cycling', 1, 1.1]),
