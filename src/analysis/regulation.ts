@@ -61,7 +61,10 @@ function droopFinding(evidence: Evidence, fit: LineFit, step: number | null, way
       promised(`${current.of}, gain`, current.gain * slopeRead),
       ...(leads === 0 ? [] : [promised('resistance of the leads', leads)]),
     ],
-    { step, note: `straight line through ${fit.points} points${bothWaysNote(ways)}` },
+    {
+      step,
+      note: `straight line through ${fit.points} points${bothWaysNote(ways)}${stillNote(fit, slopeRead)}`,
+    },
   );
 }
 
@@ -102,6 +105,17 @@ function regulationFinding(evidence: Evidence, droop: Finding, reaches: Amperes)
       { step: droop.step, note: 'from no load to rated current, of the rated voltage' },
     ),
   ];
+}
+
+/**
+ * A module may regulate so well that a coarse meter shows no change at all; a meter that has stopped measuring
+ * looks the same, and no guard can tell the two.
+ */
+function stillNote(fit: LineFit, slopeRead: number): string {
+  const still = Math.abs(slopeRead) < 1e-12 && fit.residualDeviation < 1e-12;
+  return still
+    ? '; the voltage was the same to the last digit at every current: see that what read it is live'
+    : '';
 }
 
 /** Of the voltage as the instrument read it, before what the leads lose was added by calculation; in Ω. */

@@ -35,6 +35,13 @@ describe('the line of regulation, on exact points', () => {
     expect(named('open-circuit-voltage', findings).note).toBe('by extending the line to no load');
   });
 
+  it('says where the voltage never moved by a digit: a meter that stopped measuring looks the same', () => {
+    const still = named('droop-resistance', findingsOf(ramp(currents, () => 15.2)));
+    expect(still.value).toBeCloseTo(0, 12);
+    expect(still.note).toContain('see that what read it is live');
+    expect(named('droop-resistance', findings).note).not.toContain('live');
+  });
+
   it('gives the load regulation as the fall up to rated current over the rated voltage', () => {
     // 4 A × 18 mΩ = 72 mV; 72 mV of 15 V = 0.48 %.
     expect(named('load-regulation', findings).value).toBeCloseTo(0.0048, 12);
