@@ -1,0 +1,31 @@
+import { mkdirSync, mkdtempSync, rmSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { afterAll, describe, it } from 'vitest';
+import { type CellWanted, runCell } from './cell.js';
+import { keepsItsPromise } from './checks.js';
+import { type FaultName, faults } from './faults.js';
+import { moments } from './moments.js';
+
+/** A cell takes some seconds by itself, and several share the machine with all else. */
+const cellTimeout = 90_000;
+
+/**
+ * Every fault at every moment, each on a bench of its own and with the program in a process of its own. What
+ * must come of each stands in `promises.ts`.
+ */
+export function matrix(lines: CellWanted['lines']): void {
+  const folder = mkdtempSync(join(tmpdir(), `railproof-faults-${lines}-`));
+  afterAll(() => {
+    rmSync(folder, { recursive: true, force: true });
+  });
+  describe.concurrent.each(Object.keys(faults) as FaultName[])('%s', { timeout: cellTimeout }, (fault) => {
+    it.for(moments)('at %s', async (moment, { expect, skip }) => {
+      const own = join(folder, `${fault}-${moment}`);
+      mkdirSync(own);
+      const cell = await runCell({ fault, moment, lines, folder: own });
+      if ('impossible' in cell) skip(cell.impossible);
+      else keepsItsPromise(expect, cell, fault, moment);
+    });
+  });
+}

@@ -1,0 +1,3 @@
+import { matrix } from './matrix.js';
+
+matrix('pty');
