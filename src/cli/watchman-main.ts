@@ -4,6 +4,7 @@ import { type Order, readOrder } from '../bench/watchman-order.js';
 import { type Deed, keepWatch } from '../bench/watchman.js';
 import { realClock } from '../clock/real-clock.js';
 import type { ConnectionAddress } from '../files/bench.js';
+import { formatAddress } from '../files/connection-address.js';
 import { runFolderAt } from '../record/run-folder.js';
 import { watchmanFormat, type WatchmanReport, writeWatchmanReport } from '../record/watchman-report.js';
 import { watchmanText } from '../report/watchman-text.js';
@@ -51,11 +52,11 @@ async function watch({ folder, bench, driver }: Order, line: RunnerLine): Promis
 }
 
 /** As the connectors would load it on first use. */
-async function loadWayTo({ kind }: ConnectionAddress): Promise<void> {
-  if (kind === 'tcp') await import('../instrument/tcp-connection.js');
-  if (kind !== 'serial') return;
-  await import('../instrument/serial-connection.js');
-  await import('serialport');
+async function loadWayTo(address: ConnectionAddress): Promise<void> {
+  if (address.kind === 'tcp') await import('../instrument/tcp-connection.js');
+  if (address.kind !== 'serial') return;
+  const { loadSerialPackage } = await import('../instrument/serial-connection.js');
+  await loadSerialPackage(formatAddress(address));
 }
 
 function sayReady(): void {

@@ -14,6 +14,22 @@ export interface SerialPatience {
 }
 
 /**
+ * The package that opens serial ports; for whoever wants it loaded before there is need of it.
+ * @throws InstrumentUnreachableError, which names the address, when it does not load
+ */
+export function loadSerialPackage(address: string): Promise<{ readonly SerialPort: typeof SerialPort }> {
+  return import('serialport').catch((cause: unknown) => {
+    throw new InstrumentUnreachableError({
+      address,
+      reason: 'the package that opens serial ports does not load on this machine',
+      advice:
+        'Install railproof again on this machine; its serial package holds a part made for each kind of machine.',
+      cause,
+    });
+  });
+}
+
+/**
  * Opens a serial port, for this program alone. The package that does it is loaded here, on first use.
  * @throws InstrumentUnreachableError when there is no such port or it may not be used.
  * @throws PortBusyError when another program has it open.
@@ -23,15 +39,7 @@ export async function openSerial(
   patience: SerialPatience = { writing: 5 },
 ): Promise<Connection> {
   const name = formatAddress(address);
-  const { SerialPort } = await import('serialport').catch((cause: unknown) => {
-    throw new InstrumentUnreachableError({
-      address: name,
-      reason: 'the package that opens serial ports does not load on this machine',
-      advice:
-        'Install railproof again on this machine; its serial package holds a part made for each kind of machine.',
-      cause,
-    });
-  });
+  const { SerialPort } = await loadSerialPackage(name);
   return new Promise((resolve, reject) => {
     const port = new SerialPort({
       path: address.path,
