@@ -48,8 +48,9 @@ export class JournalWriter {
 
   /**
    * When a line can't be written whole, what was written of it is taken back and the reserve given up, so that
-   * later ones (the end of the run) have room and stand on lines of their own. Nothing comes after a line that
-   * can't be taken back; nor after a flush that failed: the system may then have dropped what it could not write,
+   * later ones (the end of the run) have room and stand on lines of their own. Where it says itself that the load
+   * went off, or why the run ended, it is what the reserve is for, and is written there. Nothing comes after a
+   * line that can't be taken back; nor after a flush that failed: the system may then have dropped what it could not write,
    * and the next flush would succeed all the same.
    * @throws RecordWriteError; RecordGoneError when the file was removed since the last sealed event
    */
@@ -81,17 +82,31 @@ export class JournalWriter {
     const sealed = sealedEvents.has(event.event);
     const plain = JSON.stringify(event);
     const line = Buffer.from((sealed ? sealLine(this.#hash, plain) : plain) + '\n');
+    const noRoom = this.#put(line);
+    if (noRoom !== undefined && !(saysHowItWasLeft(event) && this.#fitsNow(line))) throw noRoom;
+    if (secured) this.#secure();
+    this.#hash.update(line);
+    this.#bytes += line.length;
+    // It is in the reserve: nothing but the end may follow it.
+    if (noRoom !== undefined && event.event !== 'ended') throw noRoom;
+  }
+
+  /** The whole line, or nothing of it; then the reserve is given up, and why there was no room comes back. */
+  #put(line: Buffer): RecordWriteError | undefined {
     try {
       writeAll(this.#file, line);
+      return undefined;
     } catch (cause) {
       const error = new RecordWriteError(this.#path, cause);
       if (!this.#takeBack()) this.#failed = error;
       this.#reserve.giveUp();
-      throw error;
+      return error;
     }
-    if (secured) this.#secure();
-    this.#hash.update(line);
-    this.#bytes += line.length;
+  }
+
+  /** Into what the reserve has left free. */
+  #fitsNow(line: Buffer): boolean {
+    return this.#failed === undefined && this.#put(line) === undefined;
   }
 
   /** On the disk, and in a file that still has a name there. */
@@ -121,6 +136,10 @@ export class JournalWriter {
     this.#reserve.giveUp();
     closeSync(this.#file);
   }
+}
+
+function saysHowItWasLeft(event: TimedEvent): boolean {
+  return event.event === 'ended' || (event.event === 'input' && event.state === 'off');
 }
 
 function writeAll(file: number, bytes: Buffer): void {
