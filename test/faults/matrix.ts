@@ -11,6 +11,22 @@ import { moments } from './moments.js';
 const cellTimeout = 90_000;
 
 /**
+ * Those akin to another are taken over one line, or not at all, in the ordinary run; RAILPROOF_FAULTS=all takes
+ * every one over both.
+ */
+const seldom: Partial<Record<FaultName, CellWanted['lines'] | 'neither'>> = {
+  missing: 'neither',
+  overload: 'neither',
+  garbled: 'pty',
+  'meter-dropped': 'tcp',
+  'meter-gone': 'pty',
+};
+
+function isTaken(fault: FaultName, lines: CellWanted['lines']): boolean {
+  return process.env['RAILPROOF_FAULTS'] === 'all' || (seldom[fault] ?? lines) === lines;
+}
+
+/**
  * Every fault at every moment, each on a bench of its own and with the program in a process of its own. What
  * must come of each stands in `promises.ts`.
  */
@@ -19,13 +35,16 @@ export function matrix(lines: CellWanted['lines']): void {
   afterAll(() => {
     rmSync(folder, { recursive: true, force: true });
   });
-  describe.concurrent.each(Object.keys(faults) as FaultName[])('%s', { timeout: cellTimeout }, (fault) => {
+  const taken = (Object.keys(faults) as FaultName[]).filter((fault) => isTaken(fault, lines));
+  describe.concurrent.each(taken)('%s', { timeout: cellTimeout }, (fault) => {
     it.for(moments)('at %s', async (moment, { expect, skip }) => {
       const own = join(folder, `${fault}-${moment}`);
       mkdirSync(own);
       const cell = await runCell({ fault, moment, lines, folder: own });
-      if ('impossible' in cell) skip(cell.impossible);
-      else keepsItsPromise(expect, cell, fault, moment);
+      if ('impossible' in cell) {
+        expect(process.env['CI'], `a gate must not leave this out: ${cell.impossible}`).toBeUndefined();
+        skip(cell.impossible);
+      } else keepsItsPromise(expect, cell, fault, moment);
     });
   });
 }

@@ -16,7 +16,7 @@ const idle = 'open-circuit: { for: 100 ms }';
 const ramp = 'load-ramp: { from: 1 A, to: 3 A, points: 3, dwell: 20 ms, readings: 7 }';
 const search =
   'dropout-search: { from: 4 A, ceiling: 6 A, climb: 2, resolution: 1 A, dwell: 20 ms, readings: 7, watch: 200 ms }';
-const soak = 'soak: { current: 2.5 A, for: 1.5 s, every: 1 s, dwell: 20 ms, readings: 8 }';
+const soak = 'soak: { current: 2.5 A, for: 3.5 s, every: 1 s, dwell: 20 ms, readings: 5 }';
 
 const ramped = { phases: ['ramp'], currents: [1, 2, 3] };
 
