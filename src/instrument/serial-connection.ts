@@ -17,8 +17,10 @@ export interface SerialPatience {
  * The package that opens serial ports; for whoever wants it loaded before there is need of it.
  * @throws InstrumentUnreachableError, which names the address, when it does not load
  */
-export function loadSerialPackage(address: string): Promise<{ readonly SerialPort: typeof SerialPort }> {
-  return import('serialport').catch((cause: unknown) => {
+export async function loadSerialPackage(
+  address: string,
+): Promise<{ readonly SerialPort: typeof SerialPort }> {
+  return await import('serialport').catch((cause: unknown) => {
     throw new InstrumentUnreachableError({
       address,
       reason: 'the package that opens serial ports does not load on this machine',
