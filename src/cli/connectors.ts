@@ -5,7 +5,11 @@ import type { OpenedSimulation } from '../simulation/open-simulation.js';
 /** The ways to connect, each loaded only when it is used. */
 export function connectors(clock: Clock, simulation?: OpenedSimulation): Connect {
   return connectorFor({
-    tcp: async (address) => (await import('../instrument/tcp-connection.js')).openTcp(address),
+    tcp: async (address, _driver, _role, within) =>
+      (await import('../instrument/tcp-connection.js')).openTcp(
+        address,
+        within === undefined ? {} : { connecting: within },
+      ),
     serial: async (address) => (await import('../instrument/serial-connection.js')).openSerial(address),
     replay: async (address) =>
       (await import('../instrument/replay-connection.js')).openReplay(address, clock),
