@@ -65,7 +65,8 @@ export class Incoming {
     return new Promise((resolve) => {
       const done = (): void => {
         clearTimeout(timer);
-        this.#wake = undefined;
+        // Woken after its time was over, it is done twice; the next one may be waiting by then.
+        if (this.#wake === done) this.#wake = undefined;
         resolve();
       };
       // On a busy machine the time may be over before we had a turn to take in what came well within it.

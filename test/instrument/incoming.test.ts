@@ -34,6 +34,22 @@ describe('what arrives on a line', () => {
     expect(performance.now() - began).toBeGreaterThan(18);
   });
 
+  it('ends the next wait for it too, though it came just as the last one was over', async () => {
+    const { arriving } = incoming();
+    const first = arriving.take(0.02);
+    // Timers of the same length fire together, in the order in which they were set.
+    setTimeout(() => {
+      arriving.arrive(Buffer.from('4'));
+    }, 20);
+    expect(await first).toEqual(Buffer.from('4'));
+    const second = arriving.take(20);
+    setTimeout(() => {
+      arriving.arrive(Buffer.from('5'));
+    }, 20);
+    const late = new Promise((resolve) => setTimeout(resolve, 5000, 'late').unref());
+    expect(await Promise.race([second, late])).toEqual(Buffer.from('5'));
+  });
+
   it('is found without waiting when the system already holds it', async () => {
     const { arriving } = incoming();
     setImmediate(() => {
