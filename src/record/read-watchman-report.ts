@@ -1,5 +1,5 @@
-import { closeSync, openSync, readSync } from 'node:fs';
 import { z } from 'zod';
+import { readWhole } from './read-whole.js';
 import type { RunFolder } from './run-folder.js';
 import { watchmanFormat, type WatchmanReport } from './watchman-report.js';
 
@@ -10,10 +10,10 @@ const schema: z.ZodType<WatchmanReport> = z.object({
   format: z.literal(watchmanFormat),
   noticed: z.iso.datetime(),
   why: z.enum(['runner-vanished', 'runner-stopped-beating']),
-  address: z.string(),
+  address: z.string().max(longest),
   attempts: z.int().nonnegative(),
   outcome: z.enum(['off', 'unconfirmed']),
-  reason: z.string().nullable(),
+  reason: z.string().max(longest).nullable(),
   took: z.number().nonnegative(),
 });
 
@@ -23,18 +23,8 @@ const schema: z.ZodType<WatchmanReport> = z.object({
  */
 export function readWatchmanReport(folder: RunFolder): WatchmanReport | undefined {
   try {
-    return schema.safeParse(JSON.parse(beginningOf(folder.watchman))).data;
+    return schema.safeParse(JSON.parse(readWhole(folder.watchman))).data;
   } catch {
     return undefined;
-  }
-}
-
-function beginningOf(path: string): string {
-  const file = openSync(path, 'r');
-  try {
-    const bytes = Buffer.alloc(longest);
-    return bytes.toString('utf8', 0, readSync(file, bytes, 0, longest, 0));
-  } finally {
-    closeSync(file);
   }
 }

@@ -1,3 +1,4 @@
+import { execFileSync } from 'node:child_process';
 import { mkdtempSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -39,5 +40,11 @@ it.each([
 ])('%s is believed to say nothing', (_, text) => {
   rmSync(folder.watchman, { force: true });
   if (text !== undefined) writeFileSync(folder.watchman, text);
+  expect(readWatchmanReport(folder)).toBeUndefined();
+});
+
+it('a pipe in its place is not waited for', () => {
+  rmSync(folder.watchman, { force: true });
+  execFileSync('mkfifo', [folder.watchman]);
   expect(readWatchmanReport(folder)).toBeUndefined();
 });
