@@ -224,6 +224,7 @@ export interface Ended {
 /** A reader believes none of these without its seal. */
 export const mustBeSealed: ReadonlySet<JournalEvent['event']> = new Set([
   'opened',
+  'resumed',
   'point-ended',
   'input',
   'guard-tripped',
@@ -231,13 +232,9 @@ export const mustBeSealed: ReadonlySet<JournalEvent['event']> = new Set([
 ]);
 
 /**
- * These are sealed, and flushed to the disk before the run goes on. In records of old the end of a step and
- * what a run was resumed from bear no seal.
+ * These are sealed, and flushed to the disk before the run goes on. In records of old the end of a step bears no
+ * seal.
  */
-export const sealedEvents: ReadonlySet<JournalEvent['event']> = new Set([
-  ...mustBeSealed,
-  'step-ended',
-  'resumed',
-]);
+export const sealedEvents: ReadonlySet<JournalEvent['event']> = new Set([...mustBeSealed, 'step-ended']);
 
 export type TimedEvent = JournalEvent & { readonly t: Seconds };

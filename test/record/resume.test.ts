@@ -113,6 +113,16 @@ describe('of a run that was broken off', () => {
     expect(String(failure(path))).toMatch(/line 1 of its journal: it does not begin with the run.json/);
   });
 
+  it('what a run went on from is believed of no line that bears no seal', () => {
+    const path = record(step(1));
+    const resumed = { run: 'another', header: '', began: '2026-11-20T09:00:00.000Z', steps: 1 };
+    appendFileSync(
+      join(path, 'journal.jsonl'),
+      `${JSON.stringify({ t: 1, event: 'resumed', ...resumed })}\n`,
+    );
+    expect(String(failure(path))).toMatch(/line 8 of its journal: the line is no event/);
+  });
+
   it('the end of a step that bears no seal is no end', () => {
     const path = record([]);
     appendFileSync(
