@@ -72,7 +72,7 @@ export class ProgressLine implements RunWatcher {
       `${minutes(now - this.#began)} gone, about ${minutes(this.#remaining(step, now))} left`,
     ]
       .filter((part) => part !== '')
-      .join('   ');
+      .join('  ');
   }
 
   #remaining(step: number, now: Seconds): Seconds {

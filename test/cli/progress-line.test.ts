@@ -10,8 +10,11 @@ const { plan } = await loadPlan({
   modules: ['fixtures/modules/K1.yaml'],
 });
 
-function lineOn(terminal: boolean): { progress: ProgressLine; clock: VirtualClock; text: () => string } {
-  const stream = Object.assign(new PassThrough({ encoding: 'utf8' }), { isTTY: terminal, columns: 120 });
+function lineOn(
+  terminal: boolean,
+  columns = 120,
+): { progress: ProgressLine; clock: VirtualClock; text: () => string } {
+  const stream = Object.assign(new PassThrough({ encoding: 'utf8' }), { isTTY: terminal, columns });
   const clock = new VirtualClock(new Date(0));
   return {
     progress: new ProgressLine(stream as unknown as NodeJS.WriteStream, plan, clock),
@@ -28,8 +31,14 @@ describe('the progress of a run', () => {
     progress.progress(2, { setCurrent: 1.2, voltage: 15.1884, current: 1.1993 });
     const shown = text();
     expect(shown).toContain('step 2 of 5: load-ramp, 21 points from 0 A to 4 A\n');
-    expect(shown).toContain('2/5   set 1.200 A   15.19 V   1.199 A   18.22 W   0:07 gone, about 1:41 left');
+    expect(shown).toContain('2/5  set 1.200 A  15.19 V  1.199 A  18.22 W  0:07 gone, about 1:41 left');
     expect(shown.split('\n')).toHaveLength(2);
+  });
+
+  it('has room for all of it on a terminal of 80 columns, in milliamperes too', () => {
+    const { progress, text } = lineOn(true, 80);
+    progress.progress(2, { setCurrent: 0.2, voltage: 15.2, current: 0.204 });
+    expect(text()).toMatch(/ 200\.0 mA .* left$/);
   });
 
   it('leaves on the screen what whoever stands there should know', () => {
@@ -42,7 +51,7 @@ describe('the progress of a run', () => {
   it('shows how warm the module is, where that is measured', () => {
     const { progress, text } = lineOn(true);
     progress.progress(2, { voltage: 15, current: 4, temperature: 41.23 });
-    expect(text()).toContain('15.00 V   4.000 A   60.00 W   41.23 °C');
+    expect(text()).toContain('15.00 V  4.000 A  60.00 W  41.23 °C');
   });
 
   it('never breaks the line of a narrow terminal', async () => {
