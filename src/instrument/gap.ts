@@ -26,6 +26,11 @@ export interface WayBack {
   onNotice(text: string): void;
 }
 
+/** Nobody wants it to be found any more. */
+export function isOver(way: WayBack): boolean {
+  return way.signal?.aborted === true || !way.isWanted();
+}
+
 /** `ask`: on the same connection; `open`: on a new one. */
 export type Again = 'ask' | 'open';
 
@@ -73,7 +78,7 @@ export async function throughGap<Result>(
   for (const { how, pause } of waysAgain(failure)) {
     if (pause > 0 && clock.now() + pause - began > patience) break;
     await clock.sleep(pause, way.signal).catch(() => undefined);
-    if (way.signal?.aborted === true || !way.isWanted()) throw failure;
+    if (isOver(way)) throw failure;
     tries += 1;
     try {
       return await again(how, Math.max(leastConnecting, patience - (clock.now() - began)));

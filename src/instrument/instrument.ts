@@ -3,7 +3,7 @@ import type { RailproofError } from '../errors/railproof-error.js';
 import type { Driver, Role } from '../files/driver.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { ConnectionLostError } from './connection-errors.js';
-import { type Again, gapText, isGap, throughGap, type WayBack } from './gap.js';
+import { type Again, gapText, isGap, isOver, throughGap, type WayBack } from './gap.js';
 import type { OperationValues } from './message.js';
 import type { Measurement } from './scpi-number.js';
 import { Session, type SessionParts } from './session.js';
@@ -164,6 +164,8 @@ export class Instrument {
       if (!isGap(error)) tell('');
       throw error;
     });
+    // Whoever wished to stop while it was sought wants nothing more of it, least of all its input on.
+    if (isOver(way)) throw failure;
     const result = await act(session);
     tell(found);
     return result;
@@ -173,7 +175,7 @@ export class Instrument {
   async #reopen(way: WayBack, within: Seconds): Promise<void> {
     await this.#session.close();
     const connection = await way.connect(within);
-    if (!way.isWanted()) {
+    if (isOver(way)) {
       await connection.close();
       throw new ConnectionLostError({ address: connection.address, reason: 'it was closed here' });
     }

@@ -209,6 +209,29 @@ describe('an instrument that is sought', () => {
     expect(clock.now() - began).toBeCloseTo(0.25, 6);
   });
 
+  it.each(['it is opened again', 'its input is read'])(
+    'is not switched on any more where the run is told to stop as %s',
+    async (when) => {
+      const stop = new AbortController();
+      const { instrument, load, cut } = await reached(
+        () => {
+          if (when === 'it is opened again') stop.abort(new Error('enough'));
+          return {};
+        },
+        { signal: stop.signal },
+      );
+      instrument.lookFirst(async (session) => {
+        await session.flag('input-state');
+        stop.abort(new Error('enough'));
+        return '';
+      });
+      cut();
+      await expect(instrument.perform('input-on')).rejects.toMatchObject({ code: 'CONNECTION_LOST' });
+      expect(load.told).not.toContain('INP ON');
+      expect(load.told.includes('INP?')).toBe(when === 'its input is read');
+    },
+  );
+
   it('and is wanted no longer has the connection closed that comes too late', async () => {
     const { instrument, lines, wanted, cut } = await reached(() => {
       wanted.now = false;
