@@ -78,7 +78,8 @@ it('everything that may be written is read', () => {
       reading-time: 40 ms
   answers: { temperature: 41 °C }
   faults:
-    - { at: 30 s, what: meter-silent }`,
+    - { at: 30 s, what: meter-silent }
+    - { at: 1 min, what: load-lost, for: 400 ms }`,
   )
     .replace('earth: bonded', 'earth: 2 kΩ')
     .replace('current: 5 A } }', 'current: 5 A, short-circuit: 1.2 A }, rated-current: 4 A }');
@@ -96,7 +97,10 @@ it('everything that may be written is read', () => {
     },
   });
   expect(simulation?.answers).toEqual({ temperature: '41 °C' });
-  expect(simulation?.faults).toEqual([{ at: 30, what: 'meter-silent' }]);
+  expect(simulation?.faults).toEqual([
+    { at: 30, what: 'meter-silent' },
+    { at: 60, what: 'load-lost', for: 0.4 },
+  ]);
 });
 
 it.each([
@@ -174,6 +178,16 @@ describe('one mistake is one line, at its place', () => {
       'faults: []',
       'faults: [{ at: 3 s, what: meter-silnt }]',
       "25:29: simulation.faults.0.what: found 'meter-silnt'; did you mean 'meter-silent'?",
+    ],
+    [
+      'faults: []',
+      'faults: [{ at: 3 s, what: module-dead, for: 2 s }]',
+      "25:47: simulation.faults.0.for: module-dead does not pass: leave out 'for'",
+    ],
+    [
+      'faults: []',
+      'faults: [{ at: 3 s, what: load-restarted }]',
+      "25:12: simulation.faults.0: load-restarted needs a 'for': how long it is away",
     ],
     [
       'faults: []',

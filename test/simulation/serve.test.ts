@@ -52,6 +52,19 @@ async function dial(address: string | undefined): Promise<Socket> {
   return socket;
 }
 
+/** For as long as a busy machine may take. */
+async function redial<Line>(dialled: () => Promise<Line>): Promise<Line> {
+  const end = realClock.now() + 15;
+  for (;;) {
+    try {
+      return await dialled();
+    } catch (error) {
+      if (realClock.now() > end) throw error;
+    }
+    await realClock.sleep(0.05);
+  }
+}
+
 async function line(socket: Socket | SerialPort): Promise<string> {
   let text = '';
   while (!text.includes('\n')) {
@@ -132,6 +145,27 @@ describe('a bench served on TCP', () => {
     await once(meter, 'close');
     await expect(dial(addresses.meter)).rejects.toThrow('ECONNREFUSED');
     expect(await ask(await dial(addresses.load), '*OPC?')).toBe('1');
+  });
+
+  it('hangs up when the instrument is lost for a while, and is back on the same port', async () => {
+    const { addresses } = await serve(
+      {},
+      simulationOf(k1(hiccup), { faults: [{ at: 2, what: 'meter-lost', for: 3 }] }),
+    );
+    const meter = await dial(addresses.meter);
+    await once(meter, 'close');
+    await expect(dial(addresses.meter)).rejects.toThrow('ECONNREFUSED');
+    const again = await redial(() => dial(addresses.meter));
+    expect(Number(await ask(again, 'READ?'))).toBeCloseTo(15.21, 4);
+    again.destroy();
+  }, 40_000);
+
+  it('is closed also while an instrument is lost', async () => {
+    const bench = await serve(
+      {},
+      simulationOf(k1(hiccup), { faults: [{ at: 0, what: 'meter-lost', for: 60 }] }),
+    );
+    await expect(bench.close()).resolves.toBeUndefined();
   });
 
   it('says so when a port is in use, and leaves nothing open', async () => {
@@ -226,6 +260,21 @@ describe.skipIf(socatIsMissing && process.env['CI'] === undefined)('a bench serv
     await bench.close();
     expect(existsSync(/^serial:(.*)\?/.exec(addresses.load ?? '')?.[1] ?? '/')).toBe(false);
   });
+
+  it('is away while the instrument is lost, and there again after it', async () => {
+    const bench = await serve(
+      { lines: 'pty' },
+      simulationOf(k1(hiccup), { faults: [{ at: 5, what: 'load-restarted', for: 0.5 }] }),
+    );
+    const load = await open(bench.addresses.load);
+    load.write('CURR 4;INP ON\n');
+    expect(await ask(load, 'INP?')).toBe('1');
+    if (load.isOpen) await once(load, 'close');
+    const again = await redial(() => open(bench.addresses.load));
+    expect(await ask(again, 'INP?')).toBe('0');
+    expect(await ask(again, 'CURR?')).toBe('+0.000000E+00');
+    await shut(again);
+  }, 40_000);
 
   it('has a port for the scanner and the thermometer too', async () => {
     const { description, drivers } = await groupBench();

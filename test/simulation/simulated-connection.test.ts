@@ -88,6 +88,38 @@ describe('a fault of an instrument', () => {
     await expect(say(meter, 'READ?')).rejects.toThrow(ConnectionLostError);
   });
 
+  it('that passes leaves it as it was: it can be opened again', async () => {
+    const bench = wireUp(simulationOf(k1(hiccup), { faults: [{ at: 30, what: 'load-lost', for: 2 }] }));
+    await bench.tell('CURR 2;INP ON');
+    await bench.clock.sleep(30 - bench.clock.now());
+    await expect(say(bench.load, 'INP?')).rejects.toThrow(ConnectionLostError);
+    expect(() => bench.connect('load', loadDriver)).toThrow('the simulated instrument is gone');
+    await bench.clock.sleep(2);
+    // The old line stays lost.
+    await expect(say(bench.load, 'INP?')).rejects.toThrow(ConnectionLostError);
+    expect(await ask(bench.connect('load', loadDriver), 'INP?')).toBe('1');
+  });
+
+  it('that takes its power leaves it as it wakes', async () => {
+    const bench = wireUp(simulationOf(k1(hiccup), { faults: [{ at: 30, what: 'load-restarted', for: 2 }] }));
+    await bench.tell('CURR 2;INP ON');
+    await bench.clock.sleep(32 - bench.clock.now());
+    const again = bench.connect('load', loadDriver);
+    expect(await ask(again, 'INP?')).toBe('0');
+    expect(await ask(again, 'CURR?')).toBe('+0.000000E+00');
+  });
+
+  it('is silent for as long as it says', async () => {
+    const { meter, clock } = wireUp(
+      simulationOf(k1(hiccup), { faults: [{ at: 1, what: 'meter-silent', for: 2 }] }),
+    );
+    await clock.sleep(1);
+    await say(meter, '*IDN?');
+    expect(await meter.receive(1)).toBeUndefined();
+    await clock.sleep(1);
+    expect(await ask(meter, '*IDN?')).toBe('railproof,simulated meter,K-bench,1');
+  });
+
   it('leaves the other instrument alone', async () => {
     const { load, clock } = wireUp(simulationOf(k1(hiccup), { faults: [{ at: 1, what: 'meter-silent' }] }));
     await clock.sleep(2);
