@@ -97,10 +97,8 @@ export class DisobeyedError extends RailproofError {
   readonly exitCode = exitCodes.instrument;
   readonly address: string;
 
-  constructor(address: string, what: string) {
-    super(`the load at ${address} ${what}`, {
-      advice: 'switch it off by hand; then `railproof drivers --try` shows which messages it understands',
-    });
+  constructor(address: string, what: string, advice: string) {
+    super(`the load at ${address} ${what}`, { advice });
     this.address = address;
   }
 }

@@ -8,6 +8,9 @@ import { type Ceilings, ceilingText, overCurrentFactor } from './ceilings.js';
 
 export type InputState = 'on' | 'off';
 
+const switchOffByHand =
+  'switch it off by hand; then `railproof drivers --try` shows which messages it understands';
+
 /**
  * Told of each change of the input, after it was read back; and, unconfirmed, before it is switched on. What it
  * throws then keeps the input off.
@@ -97,7 +100,11 @@ export class Load {
     const confirmed = await this.isOn();
     this.#onInput(confirmed ? 'on' : 'off', true);
     if (!confirmed)
-      throw new DisobeyedError(this.address, 'was told to switch its input on and says that it is off');
+      throw new DisobeyedError(
+        this.address,
+        'was told to switch its input on and says that it is off',
+        'look at its panel: what does it protect itself against, does it wait for a key there?',
+      );
   }
 
   /** @throws DisobeyedError when the load says that its input is still on. */
@@ -107,7 +114,11 @@ export class Load {
     const confirmed = !(await this.isOn());
     this.#onInput('off', confirmed);
     if (!confirmed)
-      throw new DisobeyedError(this.address, 'was told to switch its input off and says that it is on');
+      throw new DisobeyedError(
+        this.address,
+        'was told to switch its input off and says that it is on',
+        switchOffByHand,
+      );
   }
 
   /**
@@ -126,7 +137,9 @@ export class Load {
       throw complaint ?? error;
     }));
     this.#onInput('off', confirmed);
-    if (!confirmed) throw new DisobeyedError(this.address, 'was made safe and says that its input is on');
+    if (!confirmed) {
+      throw new DisobeyedError(this.address, 'was made safe and says that its input is on', switchOffByHand);
+    }
   }
 
   /**
@@ -173,7 +186,11 @@ export class Load {
     this.#onInput(now, true);
     if (before === 'on' && now === 'off') throw new LoadWentOffError(this.address);
     if (before === 'off' && now === 'on') {
-      throw new DisobeyedError(this.address, 'was off and is on now that it answers again');
+      throw new DisobeyedError(
+        this.address,
+        'was off and is on now that it answers again',
+        'somebody at its panel, another program, or the way it starts up: find out which before it is used again',
+      );
     }
     if (now === 'off') await tellAgain();
     if (now === 'off' && before === 'going-on') this.#onInput('on', false);

@@ -118,6 +118,7 @@ describe('a load whose connection drops', () => {
     await expect(bench.load.readVoltage()).rejects.toMatchObject({
       code: 'DISOBEYED',
       message: 'the load at simulated:standard-load was off and is on now that it answers again',
+      advice: expect.stringMatching(/^somebody at its panel, another program/) as string,
     });
     expect(told).toEqual([['on', true]]);
   });

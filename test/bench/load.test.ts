@@ -121,6 +121,7 @@ describe('the load of a bench', () => {
       code: 'DISOBEYED',
       exitCode: 69,
       message: 'the load at simulated:standard-load was told to switch its input on and says that it is off',
+      advice: expect.stringMatching(/^look at its panel: what does it protect itself against/) as string,
     });
     expect(told).toEqual([
       ['on', false],
@@ -134,6 +135,7 @@ describe('the load of a bench', () => {
     await expect(load.inputOff()).rejects.toMatchObject({
       code: 'DISOBEYED',
       message: 'the load at simulated:standard-load was told to switch its input off and says that it is on',
+      advice: expect.stringMatching(/^switch it off by hand/) as string,
     });
     expect(told).toEqual([
       ['on', false],
