@@ -4,7 +4,7 @@ import { root } from '../whole/railproof.js';
 import type { Scene } from './moments.js';
 
 /** How long the program waits for an answer, in milliseconds: short, and long enough for a busy machine. */
-export const timeout = 1000;
+export const timeout = 2000;
 
 export interface BenchFiles {
   /** To be served. */

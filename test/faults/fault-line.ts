@@ -17,16 +17,27 @@ export type Hearing = (message: string) => void;
 /** Told of the answers that the program was given. */
 export interface Answers {
   readonly given: (question: string, answer: string) => void;
-  /** The one given last was not taken: it came too late, as the program's next message on this line shows. */
+  /** The one given last was not taken: the program gave it up before it came. */
   readonly notTaken: (question: string) => void;
 }
 
-/** With it a program begins, and gets back in step after an answer that it did not get in time. */
+/** With it a program begins, and gets back in step after an answer that did not come in time. */
 const identify = '*IDN?';
+
+/** A question that was passed on. */
+interface Asked {
+  readonly question: string;
+  /** The reply has come, and may be on its way. */
+  replied: boolean;
+  /** The program does not wait for the answer any more. */
+  givenUp: boolean;
+}
 
 interface Pair {
   readonly client: Socket;
   readonly instrument: Socket;
+  /** What was asked and has not been answered to the program yet, in order. */
+  readonly open: Asked[];
   /** The question answered last, until the next message. */
   latest: string | undefined;
 }
@@ -114,24 +125,28 @@ export class FaultLine {
       noDelay: true,
       allowHalfOpen: true,
     });
-    const pair: Pair = { client, instrument, latest: undefined };
+    const pair: Pair = { client, instrument, open: [], latest: undefined };
     this.#pairs.add(pair);
-    const questions: string[] = [];
     let delivered = Promise.resolve();
     eachLine(client, (message) => {
       if (!this.#pairs.has(pair)) return;
-      if (message === identify && pair.latest !== undefined) this.#answers.notTaken(pair.latest);
+      if (message === identify) {
+        if (pair.latest !== undefined) this.#answers.notTaken(pair.latest);
+        for (const asked of pair.open) asked.givenUp = true;
+      }
       pair.latest = undefined;
       this.#hear(message);
       if (!this.#pairs.has(pair)) return;
-      if (message.includes('?')) questions.push(message);
+      if (message.includes('?')) pair.open.push({ question: message, replied: false, givenUp: false });
       instrument.write(`${message}\n`);
     });
     eachLine(instrument, (reply) => {
-      const question = questions.shift() ?? '';
-      const delivery = this.shape(reply, question);
-      this.latest.set(question, reply);
-      delivered = delivered.then(() => this.#deliver(pair, question, delivery));
+      const asked = pair.open.find(({ replied }) => !replied);
+      if (asked === undefined) return;
+      asked.replied = true;
+      const delivery = this.shape(reply, asked.question);
+      this.latest.set(asked.question, reply);
+      delivered = delivered.then(() => this.#deliver(pair, asked, delivery));
     });
     client.on('end', () => instrument.end());
     instrument.on('end', () => {
@@ -148,15 +163,16 @@ export class FaultLine {
     }
   }
 
-  async #deliver(pair: Pair, question: string, { pieces, answer }: Delivery): Promise<void> {
+  async #deliver(pair: Pair, asked: Asked, { pieces, answer }: Delivery): Promise<void> {
     for (const { after, text } of pieces) {
       await (after > 0 ? sleep(after) : turn());
       if (pair.client.destroyed) return;
       pair.client.write(text);
     }
-    if (answer === undefined) return;
-    pair.latest = question;
-    this.#answers.given(question, answer);
+    pair.open.splice(pair.open.indexOf(asked), 1);
+    if (answer === undefined || asked.givenUp) return;
+    pair.latest = asked.question;
+    this.#answers.given(asked.question, answer);
   }
 }
 

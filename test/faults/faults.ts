@@ -38,7 +38,7 @@ export const faults = {
   /** One answer of the load comes when nobody waits for it any more. */
   late: ({ load }) => {
     load.line.shape = once(load.line, (reply) => ({
-      pieces: [{ after: timeout * 1.6, text: `${reply}\n` }],
+      pieces: [{ after: timeout * 1.3, text: `${reply}\n` }],
       answer: undefined,
     }));
   },
