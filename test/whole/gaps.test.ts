@@ -16,7 +16,13 @@ afterAll(() => {
   rmSync(folder, { recursive: true, force: true });
 });
 
-const passing: readonly FaultName[] = ['load-lost', 'meter-lost', 'meter-silent', 'load-silent'];
+const passing: readonly FaultName[] = [
+  'load-lost',
+  'meter-lost',
+  'meter-silent',
+  'load-silent',
+  'meter-restarted',
+];
 
 /** All that passes, time and again, at distances that have nothing to do with any point. */
 const nowAndThen: readonly SimulatedFault[] = Array.from({ length: 40 }, (_, index) => ({
@@ -57,6 +63,7 @@ describe('a run over lines that drop now and then', { timeout: 120_000 }, () => 
     ['real-limit', 'nursery'],
     ['limit-shape', 'nursery-foldback'],
     ['thermal-soak', 'nursery-soak'],
+    ['isolation', 'nursery-isolation-leaky'],
   ])('%s finds on the bench %s what one over good lines finds', async (procedure, bench) => {
     const clean = await performed(procedure, bench, []);
     const disturbed = await performed(procedure, bench, nowAndThen);
