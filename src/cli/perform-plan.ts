@@ -16,7 +16,7 @@ import type { Operator } from '../steps/operator.js';
 import { headerOf } from './header-of.js';
 import type { LoadedPlan } from './load-plan.js';
 import type { Resumption } from './resume-plan.js';
-import { versionsInWords } from './resume-shown.js';
+import { instrumentsInWords, versionsInWords } from './resume-shown.js';
 import type { Watchman } from './watchman.js';
 import type { World } from './wiring.js';
 
@@ -73,6 +73,10 @@ async function performWatched(
   let append = (event: JournalEvent): void => {
     early.push(event);
   };
+  const notice = (text: string): void => {
+    options.watch.noticed(text);
+    append({ event: 'notice', text });
+  };
   const bench = await openBench({
     bench: plan.bench,
     drivers: plan.drivers,
@@ -84,10 +88,7 @@ async function performWatched(
       watchman?.input(state, confirmed);
       append({ event: 'input', state, confirmed });
     },
-    onNotice: (text) => {
-      options.watch.noticed(text);
-      append({ event: 'notice', text });
-    },
+    onNotice: notice,
   });
   options.hurry.addEventListener('abort', () => void bench.cut(), { once: true });
   try {
@@ -99,13 +100,12 @@ async function performWatched(
       append = (event) => {
         journal.append(event);
       };
-      const { watch } = options;
+      if (loaded.resumed !== undefined) {
+        instrumentsInWords(loaded.resumed.run, bench.instruments).forEach(notice);
+      }
       await watchman?.take(
         { folder: resolve(folder.path), bench: plan.bench, driver: plan.drivers.load },
-        (text) => {
-          watch.noticed(text);
-          append({ event: 'notice', text });
-        },
+        notice,
       );
       // Without a watchman it ends before its first step, as a run that is stopped there.
       const signal =

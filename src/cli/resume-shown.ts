@@ -1,3 +1,4 @@
+import type { OpenBench } from '../bench/open-bench.js';
 import type { UnfinishedRun } from '../record/resume.js';
 import { printable } from '../report/printable.js';
 import { packageFacts } from './package-facts.js';
@@ -38,10 +39,27 @@ export function versionsInWords({ header, done }: Pick<UnfinishedRun, 'header' |
   const { name, version } = packageFacts();
   const { program } = header;
   if (program.version === version) return [];
-  const steps = done.length === 1 ? 'step 1 was' : `steps 1 to ${done.length} were`;
   return [
-    `${steps} done with ${printable(`${program.name} ${program.version}`)}; this is ${name} ${version}`,
+    `${stepsWere(done)} done with ${printable(`${program.name} ${program.version}`)}; this is ${name} ${version}`,
   ];
+}
+
+/** Where an instrument is another one now, perhaps of the same make, than that which measured the steps that are done. */
+export function instrumentsInWords(
+  { header, done }: Pick<UnfinishedRun, 'header' | 'done'>,
+  present: OpenBench['instruments'],
+): readonly string[] {
+  return present.flatMap(({ post, instrument: { identity } }) => {
+    const earlier = header.instruments.find(({ role }) => role === post)?.identity;
+    if (earlier === undefined || earlier === identity) return [];
+    return [
+      `${stepsWere(done)} done with another ${post}, ${printable(earlier)}; now it is ${printable(identity)}`,
+    ];
+  });
+}
+
+function stepsWere(done: UnfinishedRun['done']): string {
+  return done.length === 1 ? 'step 1 was' : `steps 1 to ${done.length} were`;
 }
 
 function endedInWords({ ended }: UnfinishedRun): string {

@@ -148,7 +148,8 @@ async function lookAtVoltage({ plan, bench, journal }: Performance): Promise<voi
 
 async function goThrough(performance: Performance): Promise<void> {
   const { plan, bench, journal, operator, clock, signal, watch, from } = performance;
-  const known = { ...plan.known, ...from?.known };
+  // The nameplate is that of the plan, from which the ceilings are, whatever was carried.
+  const known = { ...from?.known, ...plan.known };
   const tried: Tried = { ...from?.tried };
   const earths: StepContext['earths'] = new Map(from?.earths);
   const limits = {

@@ -4,7 +4,7 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { packageFacts } from '../../src/cli/package-facts.js';
-import type { JournalEvent, TimedEvent } from '../../src/record/journal-event.js';
+import type { TimedEvent } from '../../src/record/journal-event.js';
 import { JournalWriter } from '../../src/record/journal-writer.js';
 import { runFolderAt, writeHeader } from '../../src/record/run-folder.js';
 import { readHeader, type RunHeader } from '../../src/record/run-header.js';
@@ -58,6 +58,14 @@ function withText(kind: string, from: string, to: string, hashed: boolean): (hea
       };
     }),
   });
+}
+
+function onlyRunIn(runs: string): string {
+  return join(runs, readdirSync(runs)[0] ?? '');
+}
+
+function noticesIn(runs: string): readonly string[] {
+  return eventsOf(onlyRunIn(runs)).flatMap((event) => (event.event === 'notice' ? [event.text] : []));
 }
 
 function benchWith(from: string | RegExp, to: string): string {
@@ -187,11 +195,40 @@ describe('railproof run --resume', () => {
     const { status, stderr } = await railproof('run', '--resume', record, '--runs', into);
     const words = `step 1 was done with railproof 0.0.1; this is railproof ${packageFacts().version}`;
     expect(stderr).toContain(`  ${words}\n`);
-    const notices = eventsOf(join(into, readdirSync(into)[0] ?? '')).filter(
-      (event): event is TimedEvent & Extract<JournalEvent, { event: 'notice' }> => event.event === 'notice',
-    );
-    expect(notices.map(({ text }) => text)).toContain(words);
+    expect(noticesIn(into)).toContain(words);
     expect(status).toBe(0);
+  });
+
+  it('says in the journal and on the screen that another instrument measured the first steps', async () => {
+    const record = otherwise((header) => ({
+      ...header,
+      instruments: header.instruments.map((instrument) =>
+        instrument.role === 'meter' ? { ...instrument, identity: 'NURSERY,METER,2,1' } : instrument,
+      ),
+    }));
+    const into = join(folder, 'instruments');
+    const { status, stderr } = await railproof('run', '--resume', record, '--runs', into);
+    const words =
+      'step 1 was done with another meter, NURSERY,METER,2,1; now it is railproof,simulated meter,K-bench,1';
+    expect(stderr).toContain(`  ${words}\n`);
+    expect(noticesIn(into).filter((text) => text.includes('another'))).toEqual([words]);
+    expect(status).toBe(0);
+  });
+
+  it('works the module by the nameplate of its file, whatever a record carries for one', async () => {
+    const record = otherwise(
+      (header) => header,
+      (event) =>
+        event.event === 'step-ended' && event.carried !== undefined
+          ? { ...event, carried: { ...event.carried, known: { ...event.carried.known, 'rated-current': 6 } } }
+          : event,
+    );
+    const into = join(folder, 'nameplate');
+    expect((await railproof('run', '--resume', record, '--runs', into)).status).toBe(0);
+    const currents = eventsOf(onlyRunIn(into)).flatMap((event) =>
+      event.event === 'point-began' ? [event.set.current ?? 0] : [],
+    );
+    expect(Math.max(...currents)).toBe(4);
   });
 
   it('is what a run that failed is said to go on with, before the last words', async () => {
@@ -201,7 +238,7 @@ describe('railproof run --resume', () => {
       ...['run', 'quick-look', '--bench', bench, '--module', 'fixtures/modules/K1.yaml', '--runs', into],
     );
     expect(failed.stderr.trimEnd().split('\n').slice(-2)).toEqual([
-      `\`railproof run --resume ${join(into, readdirSync(into)[0] ?? '')}\` goes on with step 2.`,
+      `\`railproof run --resume ${onlyRunIn(into)}\` goes on with step 2.`,
       'The load is off; it was read back.',
     ]);
     expect(failed.status).toBe(69);
