@@ -83,12 +83,12 @@ export async function openBench(wanted: BenchParts): Promise<OpenBench> {
   const ways = new WaysBack({ connect: parts.connect, signal: parts.signal, audience });
   // For a load that is only made safe there is no way back but that.
   const wayTo = parts.first === 'make-safe' ? undefined : ways;
-  const load = await openInstrument(parts, audience, 'load', parts.first, wayTo);
+  const load = await openInstrument(parts, audience, 'load', { first: parts.first }, wayTo);
   const others: BenchInstrument[] = [];
   try {
     for (const [post] of postsOf(parts.bench)) {
       if (post === 'load' || driverAt(parts.drivers, post) === undefined) continue;
-      others.push({ post, instrument: await openInstrument(parts, audience, post, 'identity', wayTo) });
+      others.push({ post, instrument: await openInstrument(parts, audience, post, {}, wayTo) });
     }
     return assemble(parts, audience, connections, ways, load, others);
   } catch (error) {
@@ -164,7 +164,10 @@ function assemble(
     async reopenLoad(pause) {
       await load.instrument.close();
       await parts.clock.sleep(pause);
-      load = new Load(await openInstrument(parts, audience, 'load', 'make-safe'), ceilings, audience.input);
+      // Of another one of the same make, found at an address that has changed hands, off would prove nothing.
+      const { identity } = load.instrument;
+      const same = await openInstrument(parts, audience, 'load', { first: 'make-safe', identity });
+      load = new Load(same, ceilings, audience.input);
       return load;
     },
     get gaps() {
@@ -193,7 +196,7 @@ async function openInstrument(
   { bench, drivers, connect, clock }: BenchParts,
   { notice }: Audience,
   post: Post,
-  first: InstrumentParts['first'] = 'identity',
+  { first = 'identity', identity }: { first?: InstrumentParts['first']; identity?: string },
   ways?: WaysBack,
 ): Promise<Instrument> {
   const place = postsOf(bench).find(([one]) => one === post)?.[1];
@@ -209,6 +212,7 @@ async function openInstrument(
     clock,
     onNotice: notice,
     first,
+    ...(identity !== undefined && { identity }),
     ...(wayBack && { wayBack }),
   });
 }

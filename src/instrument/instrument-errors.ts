@@ -34,10 +34,19 @@ export class WrongInstrumentError extends RailproofError {
   readonly driver: string;
   readonly identity: string;
 
-  constructor(facts: { address: string; role: string; driver: string; identity: string }) {
+  /** `before`: who answered at that address earlier, and must again. */
+  constructor(facts: {
+    address: string;
+    role: string;
+    driver: string;
+    identity: string;
+    before?: string | undefined;
+  }) {
     const identity = visible(facts.identity);
     super(
-      `${facts.address} answers as "${identity}", which is not a ${facts.role} that the driver ${facts.driver} is for`,
+      facts.before === undefined
+        ? `${facts.address} answers as "${identity}", which is not a ${facts.role} that the driver ${facts.driver} is for`
+        : `${facts.address} answers as "${identity}" and answered as "${visible(facts.before)}" before`,
       {
         advice:
           'Are two cables or two lines of the bench file swapped? Is the driver the right one, and the baud rate?',

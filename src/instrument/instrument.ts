@@ -10,7 +10,7 @@ import { Session, type SessionParts } from './session.js';
 import { Settings } from './settings.js';
 import { Turns } from './turns.js';
 
-export interface InstrumentParts extends Omit<SessionParts, 'identity'> {
+export interface InstrumentParts extends SessionParts {
   /** Without one a lost connection is lost for good, and no question is asked twice. */
   readonly wayBack?: WayBack;
 }

@@ -51,7 +51,7 @@ export class Session {
    * @throws InstrumentSilentError, ReplyNotUnderstoodError, ConnectionLostError and the rest of the dialogue's
    */
   static async open(parts: SessionParts): Promise<Session> {
-    const { role, driver, connection, clock, onNotice, trace, first = 'identity' } = parts;
+    const { driver, connection, clock, onNotice, trace, first = 'identity' } = parts;
     const fits = isIdentityFor(driver);
     const isIdentity =
       parts.identity === undefined ? fits : (reply: string): boolean => reply.trim() === parts.identity;
@@ -66,7 +66,7 @@ export class Session {
     });
     try {
       if (first === 'make-safe') await tellMakeSafeAfresh(dialogue, driver);
-      const identity = await identityOf(dialogue, driver, role, isIdentity);
+      const identity = await identityOf(dialogue, parts, isIdentity);
       const session = new Session(driver, identity, dialogue);
       const prepared = session.#prepare(onNotice);
       // Whether it is safe is read from it later, whatever it says of how it was prepared.
@@ -180,8 +180,7 @@ export class Session {
 
 async function identityOf(
   dialogue: Dialogue,
-  driver: Driver,
-  role: Role,
+  { driver, role, identity: before }: SessionParts,
   isIdentity: (reply: string) => boolean,
 ): Promise<string> {
   let identity = await dialogue.ask(driver.identify);
@@ -191,5 +190,5 @@ async function identityOf(
     identity = await dialogue.ask(driver.identify).catch(() => identity);
   }
   if (isIdentity(identity)) return identity.trim();
-  throw new WrongInstrumentError({ address: dialogue.address, role, driver: driver.name, identity });
+  throw new WrongInstrumentError({ address: dialogue.address, role, driver: driver.name, identity, before });
 }

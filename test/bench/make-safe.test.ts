@@ -130,6 +130,36 @@ describe('on a line that is new a load is told to be safe before it is asked any
 });
 
 describe('that a bench is safe is not claimed', () => {
+  it('when another load of the same make answers at its address, be it off', async () => {
+    const clock = new VirtualClock(new Date(0));
+    const ours = toyLoad();
+    const another = toyLoad({ replies: { '*IDN?': 'NURSERY,LOAD,K2,1.0' } });
+    let lost = false;
+    const line = new VirtualLine(clock, (...heard) => (lost ? [] : ours.react(...heard)));
+    const swapped = [0, 1].map(() => new VirtualLine(clock, another.react));
+    const lines = [line, ...swapped].values();
+    const bench = await openBench({
+      bench: (await nursery()).description,
+      drivers: { load: toyDriver },
+      clock,
+      connect: () => Promise.resolve(lines.next().value ?? new VirtualLine(clock, () => [])),
+      onInput: () => undefined,
+      onNotice: () => undefined,
+    });
+    await bench.load.inputOn();
+    lost = true;
+    expect(await makeSafe(bench)).toMatchObject({
+      kind: 'unconfirmed',
+      why: 'virtual: answers as "NURSERY,LOAD,K2,1.0" and answered as "NURSERY,LOAD,K1,1.0" before',
+      advice: expect.stringContaining('THE LOAD MAY STILL BE ON') as string,
+    });
+    expect([ours.state.input, another.state.input]).toEqual(['1', '0']);
+    expect(swapped.map(({ sent }) => sent.slice(0, 3))).toEqual([
+      ['', 'INP OFF', '*IDN?'],
+      ['', 'INP OFF', '*IDN?'],
+    ]);
+  });
+
   it('when the load says that it is still on, though it was told thrice', async () => {
     const { bench, told, world } = await atWork({
       load: { operations: { ...fromDriver.operations, 'make-safe': ['*CLS'] } },
