@@ -3,6 +3,7 @@ import type { Clock } from '../clock/clock.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import { printable } from '../quantity/printable.js';
 import type { Dimension, Seconds } from '../quantity/quantity.js';
+import { fitted } from '../run/word-wrap.js';
 import type { Plan } from '../run/plan.js';
 import type { RunWatcher } from '../run/perform.js';
 import type { Progress } from '../steps/step-kind.js';
@@ -48,7 +49,7 @@ export class ProgressLine implements RunWatcher {
 
   noticed(text: string): void {
     this.clear();
-    this.#stream.write(`  ${printable(text)}\n`);
+    this.#stream.write(`${fitted(printable(text), this.#stream.columns, { indent: '  ' })}\n`);
   }
 
   /** Leaves an empty line for whoever writes next. */

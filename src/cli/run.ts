@@ -5,6 +5,7 @@ import { jsonText } from '../report/json-text.js';
 import { needsOperator } from '../run/plan-circuit.js';
 import { OperatorAbsentError } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
+import { fitted } from '../run/word-wrap.js';
 import type { Operator } from '../steps/operator.js';
 import { errorText } from './error-text.js';
 import { statusOfOutcome } from './exit-status.js';
@@ -66,9 +67,8 @@ function tell(performed: PlanPerformed, json: boolean, streams: Streams): ExitCo
   }
   if (understood.kind === 'result') streams.stderr.write(resumeHint(folder.path, understood.result));
   if (safety.kind === 'unconfirmed') {
-    streams.stderr.write(
-      `\nIt could not be confirmed that the load is off: ${printable(safety.why)}\n${safety.advice}\n`,
-    );
+    const words = `\nIt could not be confirmed that the load is off: ${printable(safety.why)}\n${safety.advice}\n`;
+    streams.stderr.write(fitted(words, streams.stderr.columns));
   } else {
     streams.stderr.write('The load is off; it was read back.\n');
   }

@@ -4,7 +4,7 @@ import { printableLines } from '../quantity/printable.js';
 import type { Acknowledgement } from '../record/journal-event.js';
 import type { Operator, OperatorRequest } from '../steps/operator.js';
 import { StoppedByOperator } from './stopped.js';
-import { wordWrap } from './word-wrap.js';
+import { fitted } from './word-wrap.js';
 
 /** Longer lines are hard to read, however wide the window. */
 const widestText = 100;
@@ -61,12 +61,8 @@ export class TerminalOperator implements Operator {
     this.#terminal.output.write(this.#fitted(text));
   }
 
-  /** Broken between words where there is a terminal; whoever reads a pipe has lines of their own. */
   #fitted(text: string): string {
-    const { columns } = this.#terminal.output;
-    const said = printableLines(text);
-    // A terminal that nobody told its size has no columns at all.
-    return columns === undefined || columns === 0 ? said : wordWrap(said, Math.min(columns, widestText));
+    return fitted(printableLines(text), this.#terminal.output.columns, { widest: widestText });
   }
 
   /** At the end of the input a question would never be answered, so that is taken as a wish to stop. */

@@ -48,6 +48,12 @@ describe('the progress of a run', () => {
     expect(text()).toMatch(/\n[^\n]* {2}K1 may still be unplugged\n$/);
   });
 
+  it('breaks no word of what it leaves there', () => {
+    const { progress, text } = lineOn(true, 40);
+    progress.noticed('the meter did not answer; it was found again after 2.1 s');
+    expect(text()).toMatch(/ {2}the meter did not answer; it was found\n {2}again after 2\.1 s\n$/);
+  });
+
   it('shows how warm the module is, where that is measured', () => {
     const { progress, text } = lineOn(true);
     progress.progress(2, { voltage: 15, current: 4, temperature: 41.23 });

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { wordWrap } from '../../src/run/word-wrap.js';
+import { fitted, wordWrap } from '../../src/run/word-wrap.js';
 
 describe('text for a terminal', () => {
   it('breaks between words, and keeps the lines it had', () => {
@@ -12,6 +12,16 @@ describe('text for a terminal', () => {
   it('leaves a word that is too long in one piece', () => {
     expect(wordWrap('see https://example.org/a/long/path now', 10)).toBe(
       'see\nhttps://example.org/a/long/path\nnow',
+    );
+  });
+
+  it('is indented within the width of the terminal', () => {
+    expect(fitted('the load was found again', 16, { indent: '  ' })).toBe('  the load was\n  found again');
+  });
+
+  it.each([undefined, 0])('keeps its lines where there are %s columns', (columns) => {
+    expect(fitted('one long line\nand another', columns, { indent: '  ' })).toBe(
+      '  one long line\n  and another',
     );
   });
 
