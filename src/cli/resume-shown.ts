@@ -64,7 +64,8 @@ function stepsWere(done: UnfinishedRun['done']): string {
 
 function endedInWords({ ended }: UnfinishedRun): string {
   if (ended === undefined) return 'cut off';
-  return `${ended.how}: ${printable(ended.reason ?? 'no reason given')}`;
+  const reason = printable(ended.reason ?? 'no reason given');
+  return reason.startsWith(ended.how) ? reason : `${ended.how}: ${reason}`;
 }
 
 function inMinutes(began: string): string {

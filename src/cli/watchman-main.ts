@@ -7,6 +7,7 @@ import type { ConnectionAddress } from '../files/bench.js';
 import { formatAddress } from '../files/connection-address.js';
 import { runFolderAt } from '../record/run-folder.js';
 import { watchmanFormat, type WatchmanReport, writeWatchmanReport } from '../record/watchman-report.js';
+import { printable } from '../quantity/printable.js';
 import { watchmanText } from '../report/watchman-text.js';
 import { connectors } from './connectors.js';
 import { LastWords } from './last-words.js';
@@ -42,7 +43,7 @@ async function watch({ folder, bench, driver }: Order, line: RunnerLine): Promis
   });
   if (deed === undefined) return;
   const report = reportOf(deed);
-  words.say(`railproof: ${watchmanText(report)}.${adviceOf(deed)}`);
+  words.say(`railproof: ${watchmanText(report)}. Its record: ${printable(folder)}.${adviceOf(deed)}`);
   try {
     writeWatchmanReport(runFolderAt(folder), report);
   } catch {

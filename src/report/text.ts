@@ -107,13 +107,17 @@ function warnings(result: Result, style: Style): string[] {
   if (how === 'cut-off' && result.watchman !== undefined) lines.push(...watchmanInWords(result.watchman));
   else if (how === 'cut-off' && result.evidence.input === 'on')
     lines.push('THE LOAD WAS ON when the record broke off: `railproof safe --bench <file>` switches it off.');
+  else if (result.evidence.input === 'on')
+    lines.push(
+      'THE LOAD MAY BE ON: nobody could read back that it went off. `railproof safe --bench <file>` switches it off.',
+    );
   const { baseline, modules } = result.header;
   const names = modules.map(({ name }) => name).join(', ');
   if (baseline !== undefined && baseline.modules.join(', ') !== names)
     lines.push(
       `DIFFERENT MODULES: the baseline is of ${baseline.modules.join(', ')}, this record of ${names}.`,
     );
-  if (how === 'stopped') lines.push(`STOPPED: ${reason ?? ''}`);
+  if (how === 'stopped') lines.push(`STOPPED: ${(reason ?? '').replace(/^stopped /, '')}`);
   if (how === 'failed') lines.push(`FAILED: ${reason ?? ''}`);
   return lines.map((line) => style.warn(line));
 }

@@ -36,6 +36,20 @@ describe('the report for a terminal', () => {
     await expect(plain(resultOf(stopped))).toMatchFileSnapshot(snapshot('stopped'));
   });
 
+  it('warns where a run ended and nobody could read back that the load went off', () => {
+    const lost = { event: 'ended', how: 'failed', reason: 'connection lost', status: 69 } as const;
+    const input = (state: 'on' | 'off') => ({ event: 'input', state, confirmed: true }) as const;
+    const text = (...last: readonly ('on' | 'off')[]): string =>
+      plain(resultOf([...events, ...last.map((state) => ({ t: 20, ...input(state) })), { t: 21, ...lost }]));
+    expect(text('on')).toContain('THE LOAD MAY BE ON');
+    expect(text('on', 'off')).not.toContain('THE LOAD MAY BE ON');
+  });
+
+  it('does not stutter where the person stopped it', () => {
+    const ended = { event: 'ended', how: 'stopped', reason: 'stopped with Ctrl-C', status: 3 } as const;
+    expect(plain(resultOf([...events, { t: 20, ...ended }]))).toContain('STOPPED: with Ctrl-C');
+  });
+
   it('says so when a record holds too little for any finding', async () => {
     await expect(plain(resultOf(eventsOf([]), { ...header, criteria: [] }))).toMatchFileSnapshot(
       snapshot('empty'),
