@@ -88,6 +88,7 @@ export async function openBench(wanted: BenchParts): Promise<OpenBench> {
   try {
     for (const [post] of postsOf(parts.bench)) {
       if (post === 'load' || driverAt(parts.drivers, post) === undefined) continue;
+      parts.signal?.throwIfAborted();
       others.push({ post, instrument: await openInstrument(parts, audience, post, {}, wayTo) });
     }
     return assemble(parts, audience, connections, ways, load, others);

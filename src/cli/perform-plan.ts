@@ -114,6 +114,8 @@ async function performWatched(
         ...options,
         ...{ plan, bench, journal, clock: world.clock, from, signal },
       });
+      // What follows may keep us busy for so long that we would count as hung.
+      await watchman?.dismiss();
       return { ...performed, folder, understood: finish(folder) };
     } finally {
       journal.close();

@@ -95,8 +95,12 @@ export class Watchman {
       return;
     }
     this.#isReplaced = true;
-    this.#notice(`the watchman is gone (${how}); another one takes its place`);
     this.#process = this.#start();
-    await this.#givenOrder(order);
+    if (!(await this.#givenOrder(order))) return;
+    try {
+      this.#notice(`the watchman is gone (${how}); another one takes its place`);
+    } catch {
+      // A journal that can't be written ends the run at its next line, and says why.
+    }
   }
 }

@@ -51,6 +51,14 @@ describe('a bench that is opened', () => {
     for (const line of lines) await expect(line.write(Buffer.from('*IDN?\n'))).rejects.toThrow(/closed/);
   });
 
+  it('asks no further instrument who it is once the run is stopped, and closes what it had opened', async () => {
+    const wish = new Error('stopped with Ctrl-C');
+    const place = await nursery({ signal: AbortSignal.abort(wish) });
+    await expect(place.open()).rejects.toBe(wish);
+    expect(place.lines).toHaveLength(1);
+    await expect(place.lines[0]?.write(Buffer.from('*IDN?\n'))).rejects.toThrow('closed here');
+  });
+
   it('closes the only one it had opened when that is not what its driver is for', async () => {
     const { open, lines } = await nursery({ load: { identity: expression('^PUMP') } });
     await expect(open()).rejects.toMatchObject({ code: 'WRONG_INSTRUMENT' });

@@ -49,6 +49,32 @@ describe('a watchman that can not be had', () => {
     },
   );
 
+  it('is replaced by another one though the journal can not be told', async () => {
+    // The first one ends once it has said that it is ready; those after it stay.
+    const first = JSON.stringify(join(folder, 'first'));
+    const watchman = watchmanThat(
+      `import { existsSync, writeFileSync } from 'node:fs';
+       process.stdin.on('data', () => {
+         process.stdout.write('ready\\n', () => {
+           if (existsSync(${first})) return;
+           writeFileSync(${first}, '');
+           process.exit(9);
+         });
+       });
+       process.stdin.on('end', () => process.exit(0));`,
+      'replaced',
+    );
+    const told = new Promise<string>((resolve) => {
+      void watchman.take(order, (text) => {
+        resolve(text);
+        throw new Error('the disk is full');
+      });
+    });
+    expect(await told).toContain('it ended with status 9');
+    expect(watchman.missing.aborted).toBe(false);
+    await watchman.dismiss();
+  });
+
   it('ends a run before its first step, with nothing switched on and a record that says why', async () => {
     const loaded = await loadPlan({
       procedure: 'quick-look',
