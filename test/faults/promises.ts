@@ -40,7 +40,7 @@ const byCtrlC = /stopped with Ctrl-C/;
  */
 // prettier-ignore
 export const promises: Readonly<Record<FaultName, Row>> = {
-  dropped:         { 'pre-flight': completes, ramp: completes, search: completes, soak: completes, 'make-safe': stopped,      says: /connection lost/, saysAt: { 'make-safe': byCtrlC } },
+  dropped:         { 'pre-flight': completes, ramp: completes, search: completes, soak: completes, 'make-safe': stopped,      says: /LOAD: connection lost/, saysAt: { 'make-safe': byCtrlC } },
   gone:            { 'pre-flight': alone,     ramp: alone,     search: alone,     soak: alone,     'make-safe': stoppedAlone, says: /LOAD: (connection lost|the connection is refused|there is no port)/ },
   stolen:          { 'pre-flight': alone,     ramp: alone,     search: alone,     soak: alone,     'make-safe': stoppedAlone, says: /LOAD: (connection lost|another program has this port open)/ },
   silent:          { 'pre-flight': mute,      ramp: mute,      search: mute,      soak: mute,      'make-safe': stoppedMute,  says: /LOAD did not answer/ },
