@@ -31,8 +31,8 @@ export interface NurseryChange {
   readonly thermometerReads?: string | ((count: number) => string);
   readonly onInput?: InputListener;
   readonly onNotice?: (text: string) => void;
-  /** Of the run that opens it. */
-  readonly signal?: AbortSignal;
+  /** Heeded while it is opened, and while a lost instrument is sought. */
+  readonly opening?: AbortSignal;
 }
 
 export interface Nursery {
@@ -93,7 +93,7 @@ export async function nursery(change: NurseryChange = {}): Promise<Nursery> {
         },
         onInput: change.onInput ?? (() => undefined),
         onNotice: change.onNotice ?? (() => undefined),
-        ...(change.signal === undefined ? {} : { signal: change.signal }),
+        ...(change.opening === undefined ? {} : { signal: change.opening }),
       }),
   };
 }

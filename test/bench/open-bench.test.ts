@@ -53,7 +53,7 @@ describe('a bench that is opened', () => {
 
   it('asks no further instrument who it is once the run is stopped, and closes what it had opened', async () => {
     const wish = new Error('stopped with Ctrl-C');
-    const place = await nursery({ signal: AbortSignal.abort(wish) });
+    const place = await nursery({ opening: AbortSignal.abort(wish) });
     await expect(place.open()).rejects.toBe(wish);
     expect(place.lines).toHaveLength(1);
     await expect(place.lines[0]?.write(Buffer.from('*IDN?\n'))).rejects.toThrow('closed here');

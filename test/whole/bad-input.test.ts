@@ -51,8 +51,10 @@ async function expectRefusal(
   message: string | RegExp,
 ): Promise<void> {
   const ended = await outcome;
-  expect(ended.stderr.trimEnd().split('\n')).toHaveLength(1);
-  expect(ended.stderr).toMatch(message);
+  // What an instrument did meanwhile is told as it happens; the refusal is one line, the last.
+  const said = ended.stderr.trimEnd().split('\n');
+  expect(said.slice(0, -1).filter((line) => !line.startsWith('  '))).toEqual([]);
+  expect(said.at(-1)).toMatch(message);
   expect(ended.status).toBe(status);
   expect(ended.stdout).toBe('');
   expect(existsSync(runs) ? readdirSync(runs) : []).toEqual([]);

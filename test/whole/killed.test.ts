@@ -157,7 +157,7 @@ function lookAtLoad(bench: string): Look {
 
 /** Voltage and current as the progress line showed them, in the order in which it did. */
 function shownIn(screen: string): readonly string[] {
-  return [...screen.matchAll(/ {3}(-?[\d.]+ [mµk]?V) {3}(-?[\d.]+ [mµn]?A) {3}/g)].map(
+  return [...screen.matchAll(/ {2}(-?[\d.]+ [mµk]?V) {2}(-?[\d.]+ [mµn]?A) {2}/g)].map(
     ([, voltage, current]) => `${voltage ?? ''} ${current ?? ''}`,
   );
 }
