@@ -6,7 +6,7 @@ import { join } from 'node:path';
 import { expect, it, onTestFinished, vi } from 'vitest';
 import { benchFile } from '../cli/at-a-socket.js';
 import { until } from './at-the-bench.js';
-import { ended, start } from './railproof.js';
+import { ended, type Ended, start } from './railproof.js';
 
 vi.setConfig({ testTimeout: 60_000 });
 
@@ -39,9 +39,13 @@ async function silentLoad() {
   return { told, address, driver, bench: benchFile(folder, address) };
 }
 
-it('making safe is not stopped by Ctrl-C, once or twice: the load is told on each connection', async () => {
-  const { told, bench } = await silentLoad();
-  const child = start(['safe', '--bench', bench]);
+/** A program that is told to stop once it has asked who is there, and told again when it has said so. */
+async function stoppedTwice(
+  args: readonly string[],
+  told: readonly string[],
+  second: NodeJS.Signals,
+): Promise<Ended> {
+  const child = start(args);
   let talk = '';
   child.stderr?.on('data', (more: Buffer) => {
     talk += more.toString();
@@ -51,8 +55,13 @@ it('making safe is not stopped by Ctrl-C, once or twice: the load is told on eac
   child.kill('SIGINT');
   await until(() => talk.includes('stopped with Ctrl-C'));
   await new Promise((resolve) => setTimeout(resolve, 150));
-  child.kill('SIGINT');
-  const { status, stderr } = await end;
+  child.kill(second);
+  return end;
+}
+
+it('making safe is not stopped by Ctrl-C, once or twice: the load is told on each connection', async () => {
+  const { told, bench } = await silentLoad();
+  const { status, stderr } = await stoppedTwice(['safe', '--bench', bench], told, 'SIGINT');
   expect(told.map((each) => each.trim().split('\n')[0])).toEqual(['INP OFF', 'INP OFF']);
   expect(stderr.trimEnd().split('\n').at(-1)).toMatch(/^THE LOAD MAY STILL BE ON\. /);
   expect(status).toBe(69);
@@ -60,18 +69,8 @@ it('making safe is not stopped by Ctrl-C, once or twice: the load is told on eac
 
 it('a trial of a driver that is stopped twice ends at once, and says that nobody knows', async () => {
   const { told, address, driver } = await silentLoad();
-  const child = start(['drivers', '--try', driver, '--connection', address]);
-  let talk = '';
-  child.stderr?.on('data', (more: Buffer) => {
-    talk += more.toString();
-  });
-  const end = ended(child);
-  await until(() => told[0]?.includes('*IDN?') === true);
-  child.kill('SIGINT');
-  await until(() => talk.includes('stopped with Ctrl-C'));
-  await new Promise((resolve) => setTimeout(resolve, 150));
-  child.kill('SIGTERM');
-  const { status, stderr } = await end;
+  const trial = ['drivers', '--try', driver, '--connection', address];
+  const { status, stderr } = await stoppedTwice(trial, told, 'SIGTERM');
   expect(told[0]?.trim().split('\n')[0]).toBe('INP OFF');
   expect(stderr.trimEnd().split('\n').at(-1)).toMatch(/^THE LOAD MAY STILL BE ON\. /);
   expect(status).toBe(3);

@@ -11,9 +11,8 @@ import {
 } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { connect } from 'node:net';
-import { once } from 'node:events';
 import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest';
+import { askLoad } from './at-the-bench.js';
 import { ended, railproof, start } from './railproof.js';
 import { serve, type Served } from './served.js';
 
@@ -33,16 +32,6 @@ afterEach(async () => {
 afterAll(() => {
   rmSync(folder, { recursive: true, force: true });
 });
-
-/** Asks the load itself, on a line of its own, as somebody at its front panel would look. */
-async function inputState(bench: string): Promise<string> {
-  const port = Number(/load:.*tcp:\/\/127\.0\.0\.1:(\d+)/.exec(readFileSync(bench, 'utf8'))?.[1]);
-  const socket = connect(port, '127.0.0.1');
-  socket.write('INP?\n');
-  const [reply] = (await once(socket, 'data')) as [Buffer];
-  socket.destroy();
-  return reply.toString().trim();
-}
 
 describe('a run that is stopped in the middle leaves the load off and the record whole', () => {
   const brisk = join(folder, 'brisk.yaml');
@@ -64,13 +53,13 @@ describe('a run that is stopped in the middle leaves the load off and the record
     ]);
     const end = ended(child);
     await energised(runs);
-    expect(await inputState(served.bench)).toBe('1');
+    expect(await askLoad(served.bench)).toBe('1');
     child.kill(signal);
     const { status, stderr } = await end;
     expect(status).toBe(3);
     expect(stderr).toMatch(words);
     expect(stderr).toContain('The load is off; it was read back.');
-    expect(await inputState(served.bench)).toBe('0');
+    expect(await askLoad(served.bench)).toBe('0');
     const journal = readFileSync(join(runs, readdirSync(runs)[0] ?? '', 'journal.jsonl'), 'utf8');
     expect(journal.trimEnd().split('\n').at(-1)).toMatch(
       /"event":"ended","how":"stopped".*"seal":"[0-9a-f]{64}"\}$/,
@@ -94,7 +83,7 @@ describe('a run that is stopped in the middle leaves the load off and the record
     expect(stderr).toMatch(/a fault of ours, please report it: Error: a surprise/);
     expect(stderr).toContain('The load is off; it was read back.');
     expect(status).toBe(70);
-    expect(await inputState(served.bench)).toBe('0');
+    expect(await askLoad(served.bench)).toBe('0');
     const again = await railproof(['analyse', join(runs, readdirSync(runs)[0] ?? '')]);
     expect(again.stdout).toContain('FAILED: a fault of ours');
     expect(again.status).toBe(70);
