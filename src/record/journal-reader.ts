@@ -19,6 +19,9 @@ export type Integrity =
       readonly problem: string;
     };
 
+/** The problem of a journal whose first line names another run.json than the one beside it. */
+export const otherHeader = 'it does not begin with the run.json that is here now';
+
 const chunkSize = 1 << 18;
 const longestLine = 1 << 20;
 

@@ -1,6 +1,6 @@
 import type { Seconds } from '../quantity/quantity.js';
 import type { Carried, Ended, Resumed, StepBegan, StepEnded, TimedEvent } from './journal-event.js';
-import { checkJournal, type Integrity, readJournal } from './journal-reader.js';
+import { checkJournal, type Integrity, otherHeader, readJournal } from './journal-reader.js';
 import { BadRecordError } from './record-error.js';
 import { NotResumableError } from './resume-error.js';
 import { type RunFolder, runFolderAt } from './run-folder.js';
@@ -51,8 +51,7 @@ export function readUnfinished(path: string): UnfinishedRun {
         });
   if (integrity.kind === 'damaged') throw damaged(path, integrity.line, integrity.problem);
   const { begunWith, resumed, done, carried, until, ended } = seen;
-  if (begunWith !== undefined && begunWith !== sha256)
-    throw damaged(path, 1, 'it does not begin with the run.json that is here now');
+  if (begunWith !== undefined && begunWith !== sha256) throw damaged(path, 1, otherHeader);
   if (ended?.how === 'completed')
     throw new NotResumableError(
       path,

@@ -1,7 +1,7 @@
 import { analyse } from '../analysis/analyse.js';
 import { type Evidence, EvidenceCollector } from '../analysis/evidence.js';
 import { type Decision, judge, overall } from '../judgement/judge.js';
-import { checkJournal, type Integrity, readJournal } from '../record/journal-reader.js';
+import { checkJournal, type Integrity, otherHeader, readJournal } from '../record/journal-reader.js';
 import { readWatchmanReport } from '../record/read-watchman-report.js';
 import { runFolderAt } from '../record/run-folder.js';
 import { readHeader } from '../record/run-header.js';
@@ -40,8 +40,7 @@ export function understand(path: string): Result {
 
 /** What was planned, on what and with what, decides what the readings mean: nothing of it may be changed. */
 function changedHeader({ lines, bytes }: Integrity): Integrity {
-  const problem = 'it does not begin with the run.json that is here now';
-  return { kind: 'damaged', lines, bytes, line: 1, problem };
+  return { kind: 'damaged', lines, bytes, line: 1, problem: otherHeader };
 }
 
 /**
