@@ -1,3 +1,4 @@
+import { settlingOf } from '../files/driver.js';
 import type { Clock } from '../clock/clock.js';
 import type { Group, Post } from '../files/bench.js';
 import type { Instrument } from '../instrument/instrument.js';
@@ -104,7 +105,9 @@ export class MeterPlaces {
     if (scanner.reads('closed-channel')) await checkClosed(scanner, channel);
     this.#closed = channel;
     // The relay bounces, and what the meter measures has changed as much as on any step of the load.
-    await this.#clock.sleep(Math.max(scanner.driver.settling, this.#meter?.driver.settling ?? 0));
+    await this.#clock.sleep(
+      Math.max(scanner.driver.settling, this.#meter === undefined ? 0 : settlingOf(this.#meter.driver)),
+    );
   }
 
   #channelOf({ place }: Tap): number {

@@ -106,11 +106,14 @@ export interface InstrumentPlace {
   /** The name of a shipped driver, or a path relative to the bench file. */
   readonly driver: string;
   readonly connection: ConnectionAddress;
+  /** Of an instrument with several. */
+  readonly channel?: number;
 }
 
 export type ConnectionAddress =
   | { readonly kind: 'tcp'; readonly host: string; readonly port: number }
-  | ({ readonly kind: 'serial'; readonly path: string } & SerialSettings)
+  /** What it does not say of the line the driver says, or it is as usual. */
+  | ({ readonly kind: 'serial'; readonly path: string } & Partial<SerialSettings>)
   | { readonly kind: 'replay'; readonly file: string }
   /** `simulated:` picks the dialect that understands the driver; `simulated:<dialect>` names one. */
   | { readonly kind: 'simulated'; readonly dialect?: string };
@@ -121,4 +124,7 @@ export interface SerialSettings {
   readonly parity: 'none' | 'even' | 'odd';
   readonly stop: 1 | 2;
   readonly flow: 'none' | 'hardware' | 'software';
+  /** The control lines while the port is open; as the system leaves them where nothing is said. */
+  readonly dtr?: 'on' | 'off';
+  readonly rts?: 'on' | 'off';
 }

@@ -24,18 +24,26 @@ export const addressForms = [
   'simulated:',
 ] as const;
 
-/** What a serial line is set to where its address does not say otherwise. */
-export const serialDefaults: SerialSettings = { baud: 9600, data: 8, parity: 'none', stop: 1, flow: 'none' };
+/** What a serial line is set to where neither its address nor the driver says otherwise. */
+export const serialDefaults: Omit<SerialSettings, 'dtr' | 'rts'> = {
+  baud: 9600,
+  data: 8,
+  parity: 'none',
+  stop: 1,
+  flow: 'none',
+};
 
 const serialChoices = {
   data: ['7', '8'],
   parity: ['none', 'even', 'odd'],
   stop: ['1', '2'],
   flow: ['none', 'hardware', 'software'],
+  dtr: ['on', 'off'],
+  rts: ['on', 'off'],
 } as const;
-const serialOptions = ['baud', ...Object.keys(serialChoices)];
-const slowest = 50;
-const fastest = 4_000_000;
+const serialOptions = ['baud', 'data', 'parity', 'stop', 'flow', 'dtr', 'rts'] as const;
+export const slowestLine = 50;
+export const fastestLine = 4_000_000;
 
 /**
  * Reads the address of an instrument: `tcp://host:port`, `serial:path?baud=9600&…`, `replay:file.jsonl`,
@@ -71,16 +79,16 @@ export function parseAddress(text: string): ConnectionAddress {
   }
 }
 
-/** The inverse of {@link parseAddress}; of a serial line it gives the speed and what is not the default. */
+/** The inverse of {@link parseAddress}. */
 export function formatAddress(address: ConnectionAddress): string {
   switch (address.kind) {
     case 'tcp':
       return `tcp://${address.host.includes(':') ? `[${address.host}]` : address.host}:${address.port}`;
     case 'serial': {
-      const options = (['data', 'parity', 'stop', 'flow'] as const)
-        .filter((option) => address[option] !== serialDefaults[option])
-        .map((option) => `&${option}=${address[option]}`);
-      return `serial:${address.path}?baud=${address.baud}${options.join('')}`;
+      const options = serialOptions
+        .filter((option) => address[option] !== undefined)
+        .map((option) => `${option}=${address[option]}`);
+      return `serial:${address.path}${options.length === 0 ? '' : `?${options.join('&')}`}`;
     }
     case 'replay':
       return `replay:${address.file}`;
@@ -108,36 +116,32 @@ function parseSerial(rest: string, text: string): ConnectionAddress {
   const given = new Map<string, string>();
   for (const part of query === undefined || query === '' ? [] : query.split('&')) {
     const [option = '', value = ''] = splitOnce(part, '=');
-    if (!serialOptions.includes(option)) {
+    if (!serialOptions.some((known) => known === option)) {
       const hint = didYouMean(option, serialOptions) || `; known are ${serialOptions.join(', ')}`;
       throw new AddressError(`a serial line has no option ${shown(option)}${hint}`, text);
     }
     if (given.has(option)) throw new AddressError(`the option '${option}' is given twice`, text);
     given.set(option, value);
   }
-  const chosen = (option: keyof typeof serialChoices): string => {
-    const value = given.get(option) ?? String(serialDefaults[option]);
-    const choices: readonly string[] = serialChoices[option];
-    if (choices.includes(value)) return value;
-    const hint = didYouMean(value, choices) || `; ${choices.join(' or ')} is needed`;
-    throw new AddressError(`${option}=${value} is not known${hint}`, text);
-  };
-  return {
-    kind: 'serial',
-    path,
-    baud: baudRate(given.get('baud'), text),
-    data: Number(chosen('data')) as SerialSettings['data'],
-    parity: chosen('parity') as SerialSettings['parity'],
-    stop: Number(chosen('stop')) as SerialSettings['stop'],
-    flow: chosen('flow') as SerialSettings['flow'],
-  };
+  const settings = [...given].map(([option, value]) => [option, settingOf(option, value, text)] as const);
+  return { kind: 'serial', path, ...(Object.fromEntries(settings) as Partial<SerialSettings>) };
 }
 
-function baudRate(given: string | undefined, text: string): number {
-  if (given === undefined) return serialDefaults.baud;
+function settingOf(option: string, value: string, text: string): string | number {
+  if (option === 'baud') return baudRate(value, text);
+  const choices: readonly string[] = serialChoices[option as keyof typeof serialChoices];
+  if (choices.includes(value)) return /^\d$/.test(value) ? Number(value) : value;
+  const hint = didYouMean(value, choices) || `; ${choices.join(' or ')} is needed`;
+  throw new AddressError(`${option}=${value} is not known${hint}`, text);
+}
+
+function baudRate(given: string, text: string): number {
   const baud = /^\d{1,7}$/.test(given) ? Number(given) : Number.NaN;
-  if (baud >= slowest && baud <= fastest) return baud;
-  throw new AddressError(`baud=${given} will not do; a speed from ${slowest} to ${fastest} is needed`, text);
+  if (baud >= slowestLine && baud <= fastestLine) return baud;
+  throw new AddressError(
+    `baud=${given} will not do; a speed from ${slowestLine} to ${fastestLine} is needed`,
+    text,
+  );
 }
 
 function splitOnce(text: string, mark: string): [string] | [string, string] {

@@ -1,6 +1,15 @@
 import { dimensionWords } from '../quantity/dimension-words.js';
 import { shown } from '../quantity/shown-text.js';
-import { operationsOf, readingsOf, type DriverReading, type Role } from './driver.js';
+import {
+  operationsOf,
+  readingsOf,
+  type Channels,
+  type DriverReading,
+  type ErrorReport,
+  type Message,
+  type Readiness,
+  type Role,
+} from './driver.js';
 import { didYouMean } from '../quantity/nearest.js';
 import { readingDimensions } from './reading-dimensions.js';
 import type { Complaint } from './yaml-document.js';
@@ -9,10 +18,14 @@ import type { Complaint } from './yaml-document.js';
 interface DriverFile {
   readonly role: Role;
   readonly identify: string;
-  readonly errors: 'none' | { readonly ask: string };
-  readonly prepare: readonly string[];
-  readonly release: readonly string[];
-  readonly operations: Readonly<Record<string, readonly string[]>>;
+  readonly errors: 'none' | ErrorReport;
+  readonly ready?: Readiness | undefined;
+  readonly channels?: Channels | undefined;
+  readonly remote: readonly Message[];
+  readonly prepare: readonly Message[];
+  readonly release: readonly Message[];
+  readonly local: readonly Message[];
+  readonly operations: Readonly<Record<string, readonly Message[]>>;
   readonly readings: Readonly<Record<string, DriverReading>>;
   readonly accuracy: Readonly<Record<string, unknown>>;
 }
@@ -45,6 +58,8 @@ export function driverProblems(driver: DriverFile): Complaint[] {
     ...strayPlaceholders(driver),
     ...readingKinds(driver),
     ...accuracyWithoutReading(driver),
+    ...channelProblems(driver),
+    ...neverReady(driver),
   ];
 }
 
@@ -75,34 +90,83 @@ function* silentOperations({ role, operations }: DriverFile): Generator<Complain
   }
 }
 
-function* operationPlaceholders({ operations }: DriverFile): Generator<Complaint> {
-  for (const [operation, messages] of Object.entries(operations)) {
+function* operationPlaceholders(driver: DriverFile): Generator<Complaint> {
+  for (const [operation, messages] of Object.entries(driver.operations)) {
     const due = placeholderOf[operation];
     const path = ['operations', operation];
     const strays = messages.flatMap((message, index) =>
-      placeholdersIn(message)
-        .filter((each) => each !== due)
+      placeholdersIn(message.text)
+        .filter((each) => each !== due && !(each === '{channel}' && driver.channels))
         .map((each) => ({ path: [...path, index], message: stray(each, due) })),
     );
     yield* strays;
     if (due === undefined || messages.length === 0 || strays.length > 0) continue;
-    if (messages.some((message) => message.includes(due))) continue;
+    if (messages.some(({ text }) => text.includes(due))) continue;
     yield { path, message: `no message holds ${due}, which stands for the value` };
   }
 }
 
 function* strayPlaceholders(driver: DriverFile): Generator<Complaint> {
-  const places: [Complaint['path'], string][] = [
-    [['identify'], driver.identify],
-    ...(driver.errors === 'none' ? [] : [[['errors', 'ask'], driver.errors.ask] as [string[], string]]),
-    ...driver.prepare.map((message, index): [PropertyKey[], string] => [['prepare', index], message]),
-    ...driver.release.map((message, index): [PropertyKey[], string] => [['release', index], message]),
+  const asked = (path: string[], ask: string | undefined): [PropertyKey[], string][] =>
+    ask === undefined ? [] : [[path, ask]];
+  const listed = (path: string[], messages: readonly Message[]): [PropertyKey[], string][] =>
+    messages.map(({ text }, index) => [[...path, index], text]);
+  const ofNoChannel = [
+    ...asked(['identify'], driver.identify),
+    ...asked(['errors', 'ask'], driver.errors === 'none' ? undefined : driver.errors.ask),
+    ...asked(['ready', 'ask'], driver.ready?.ask),
+    ...listed(['remote'], driver.remote),
+    ...listed(['local'], driver.local),
+  ];
+  const ofAChannel = [
+    ...listed(['channels', 'select'], driver.channels?.select ?? []),
+    ...listed(['prepare'], driver.prepare),
+    ...listed(['release'], driver.release),
     ...Object.entries(driver.readings).flatMap(([reading, { ask }]) =>
-      ask.map((message): [PropertyKey[], string] => [['readings', reading, 'ask'], message]),
+      ask.flatMap(({ text }) => asked(['readings', reading, 'ask'], text)),
     ),
   ];
-  for (const [path, message] of places) {
-    for (const each of placeholdersIn(message)) yield { path, message: stray(each, undefined) };
+  for (const [path, text] of ofNoChannel) {
+    for (const each of placeholdersIn(text)) yield { path, message: stray(each, undefined) };
+  }
+  for (const [path, text] of ofAChannel) {
+    for (const each of placeholdersIn(text)) {
+      if (each !== '{channel}' || driver.channels === undefined) {
+        yield { path, message: stray(each, driver.channels && '{channel}') };
+      }
+    }
+  }
+}
+
+function* channelProblems({ role, channels }: DriverFile): Generator<Complaint> {
+  if (channels === undefined) return;
+  if (role === 'scanner') {
+    yield { path: ['channels'], message: "a scanner's channels are closed one by one; it has no others" };
+  } else if (channels.last < channels.first) {
+    yield { path: ['channels', 'to'], message: 'the highest channel is below the lowest' };
+  }
+}
+
+/** Who is waited for until it is ready must be able to say so. */
+function* neverReady(driver: DriverFile): Generator<Complaint> {
+  if (driver.ready !== undefined) return;
+  const lists: [PropertyKey[], readonly Message[]][] = [
+    [['remote'], driver.remote],
+    [['prepare'], driver.prepare],
+    [['release'], driver.release],
+    [['local'], driver.local],
+    ...Object.entries(driver.operations).map(([name, messages]): [PropertyKey[], readonly Message[]] => [
+      ['operations', name],
+      messages,
+    ]),
+    ...Object.entries(driver.readings).map(([name, { ask }]): [PropertyKey[], readonly Message[]] => [
+      ['readings', name, 'ask'],
+      ask,
+    ]),
+  ];
+  for (const [path, messages] of lists) {
+    if (!messages.some(({ untilReady }) => untilReady === true)) continue;
+    yield { path, message: "'until: ready' needs a 'ready' in this file, which says how it is asked for" };
   }
 }
 

@@ -1,93 +1,29 @@
 import { z } from 'zod';
-import { QuantityError } from '../quantity/parse-quantity.js';
-import type { Dimension } from '../quantity/quantity.js';
-import { readUnit } from '../quantity/units.js';
-import { choice, line, name, quantity, readFromText } from './building-blocks.js';
+import { choice, count, line, name, quantity } from './building-blocks.js';
 import { camelKeys, withoutHeader } from './camel-keys.js';
 import { driverProblems } from './driver-checks.js';
-import { operationWords, readingWords } from './driver-words.js';
-import { operationsOf, readingsOf, type Driver, type DriverReading } from './driver.js';
+import { errorsSchema, readySchema } from './driver-errors-schema.js';
 import { regularExpression } from './driver-expression.js';
+import { messages, messageText } from './driver-message-schema.js';
+import { readingSchema } from './driver-reading-schema.js';
+import { wireSchema } from './driver-wire-schema.js';
+import { operationWords, readingWords } from './driver-words.js';
+import { operationsOf, readingsOf, type Channels, type Driver } from './driver.js';
 import { headers } from './file-kind.js';
-import { found } from './plain-words.js';
 import { errorDimension, readingDimensions } from './reading-dimensions.js';
 
-const message = z.string().regex(/^[\x20-\x7e]{1,200}$/, {
-  error: ({ input }) => `${found(input)}; a message is 1 to 200 plain ASCII characters on one line`,
-});
+const mostChannels = 9999;
 
-const messages = z.array(message).max(20);
-
-const ask = z
-  .union([message, messages.min(1)], {
-    error: ({ input }) => `${found(input)}; a message, or a list of messages, is needed`,
-  })
-  .transform((given) => (typeof given === 'string' ? [given] : given))
-  .describe('What is sent; of a list, the last message is the one that is answered.');
-
-const lineEnd = (description: string): z.ZodString =>
-  z
-    .string()
-    .refine((text) => /^\p{ASCII}{1,4}$/u.test(text), {
-      error: ({ input }) => `${found(input)}; 1 to 4 ASCII characters are needed, as in "\\n" or "\\r\\n"`,
-    })
-    .meta({ description, examples: ['\n', '\r\n'] });
-
-const plainUnits = ['V', 'A', 'W', 'Ohm', '°C'];
-
-const unit = readFromText<Dimension>(
-  { description: 'The unit of the number in the reply.', examples: plainUnits },
-  `one of ${plainUnits.join(', ')} is needed`,
-  (value) => {
-    const known = typeof value === 'string' ? readUnit(value) : undefined;
-    if (known?.factor === 1 && known.shift === 0) return known.dimension;
-    const expected = `a unit without a prefix is needed: ${plainUnits.join(', ')}`;
-    throw new QuantityError(`${found(value)}; ${expected}`, { found: found(value), expected });
-  },
-);
-
-const reading = z
+const channels = z
   .strictObject({
-    ask,
-    unit: unit.exactOptional(),
-    pattern: regularExpression('Finds the number in the reply, in a group named value.', [
-      'value',
-    ]).exactOptional(),
-    'true-when': regularExpression('The answer is yes when the reply looks like this.').exactOptional(),
-    'false-when': regularExpression(
-      'What a no looks like, where it does not end in 0, OFF, FALSE or NO.',
-    ).exactOptional(),
-    'channel-in': regularExpression(
-      "Finds the number of the scanner's closed channel, in a group named value; none is closed where it finds none.",
-      ['value'],
-    ).exactOptional(),
+    select: messages
+      .default([])
+      .describe('Sent before each operation and each reading; {channel} stands for the number.'),
+    from: count('The lowest channel.', { least: 0, most: mostChannels }).default(1),
+    to: count('The highest channel.', { least: 0, most: mostChannels }),
   })
-  .superRefine((value, context) => {
-    const complain = (path: string[], text: string): void => {
-      context.addIssue({ code: 'custom', path, message: text });
-    };
-    const kinds = [value.unit, value['true-when'], value['channel-in']].filter((each) => each !== undefined);
-    if (kinds.length !== 1) {
-      complain(
-        [],
-        "a reading has a 'unit', when it is a number, or 'true-when', when it is a yes or a no, or 'channel-in', when it is a scanner's channel",
-      );
-    } else if (value.unit === undefined && value.pattern !== undefined) {
-      complain(['pattern'], "only a reading with a 'unit' has a pattern");
-    } else if (value['true-when'] === undefined && value['false-when'] !== undefined) {
-      complain(['false-when'], "only a reading with 'true-when' can be false");
-    }
-  })
-  .transform((value): DriverReading => {
-    const { ask: asked, unit: dimension, pattern, 'true-when': trueWhen, 'channel-in': channelIn } = value;
-    const { 'false-when': falseWhen } = value;
-    if (channelIn !== undefined) return { kind: 'channel', ask: asked, channelIn };
-    if (trueWhen !== undefined)
-      return { kind: 'flag', ask: asked, trueWhen, ...(falseWhen === undefined ? {} : { falseWhen }) };
-    // The refinement above lets no reading through that has neither.
-    if (dimension === undefined) return z.NEVER;
-    return { kind: 'number', ask: asked, dimension, ...(pattern === undefined ? {} : { pattern }) };
-  });
+  .transform(({ select, from, to }): Channels => ({ select, first: from, last: to }))
+  .describe('The channels of such an instrument, one of which the bench file names.');
 
 const accuracy = Object.fromEntries(
   Object.entries(readingDimensions).map(([each, dimension]) => {
@@ -113,39 +49,27 @@ export const driverSchema: z.ZodType<Driver> = z
       'The part of these instruments in the work.',
     ),
     summary: line('Which instruments this is for, in a sentence.').min(1),
-    wire: camelKeys(
-      z.strictObject({
-        'send-end': lineEnd('What ends a message to the instrument.').default('\n'),
-        'reply-end': lineEnd('What ends a reply.').default('\n'),
-        gap: quantity('time', 'Silence kept between two messages.', { least: 0, most: 60 }).prefault('0 ms'),
-        timeout: quantity('time', 'How long a reply may take.', { above: 0, most: 600 }).prefault('1 s'),
-      }),
-    )
-      .prefault({})
-      .describe('How messages travel.'),
-    identify: message.describe('The question for the identity.'),
+    wire: wireSchema,
+    remote: messages
+      .default([])
+      .describe('Sent before anything else, even before what makes safe, on each new connection.'),
+    identify: messageText.describe('The question for the identity.'),
     identity: regularExpression(
       'What the identity must look like; any will do when left out.',
     ).exactOptional(),
-    errors: z
-      .union(
-        [
-          z.literal('none'),
-          z.strictObject({
-            ask: message.describe('Asks for the next entry of the error queue.'),
-            clear: regularExpression('What the answer looks like when there is none.'),
-          }),
-        ],
-        { error: ({ input }) => `${found(input)}; none, or a map with 'ask' and 'clear', is needed` },
-      )
-      .describe('The error queue of the instrument, or none.'),
+    errors: errorsSchema,
+    ready: readySchema.exactOptional(),
+    channels: channels.exactOptional(),
     prepare: messages.default([]).describe('Sent once, when the instrument is taken into use.'),
     release: messages.default([]).describe('Sent once, when it is given back.'),
+    local: messages
+      .default([])
+      .describe('Sent last of all, with nothing asked after it: back to the front panel.'),
     operations: z
       .strictObject(optionalKeys(operationsOf, messages, operationWords))
       .describe('The messages for each operation; {amps} and {volts} stand for the value.'),
     readings: z
-      .strictObject(optionalKeys(readingsOf, reading, readingWords))
+      .strictObject(optionalKeys(readingsOf, readingSchema, readingWords))
       .prefault({})
       .describe('How each reading is asked for and read.'),
     settling: quantity('time', 'What the instrument needs after an operation before a reading counts.', {

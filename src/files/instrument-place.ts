@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { line, readFromText } from './building-blocks.js';
+import { count, line, readFromText } from './building-blocks.js';
 import { addressForms, AddressError, parseAddress } from './connection-address.js';
 import { found } from './plain-words.js';
 
@@ -20,4 +20,5 @@ const connection = readFromText(
 export const instrumentPlace = z.strictObject({
   driver: line('The name of a shipped driver, or the path of a driver file from here.').min(1),
   connection,
+  channel: count('Which channel of an instrument with several.', { least: 0, most: 9999 }).exactOptional(),
 });

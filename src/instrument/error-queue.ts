@@ -15,7 +15,7 @@ export async function readErrorQueue(
   errors: Driver['errors'],
 ): Promise<{ readonly entries: readonly ScpiError[]; readonly clear: boolean }> {
   const entries: ScpiError[] = [];
-  if (errors === 'none') return { entries, clear: true };
+  if (errors === 'none' || errors.kind !== 'queue') return { entries, clear: true };
   while (entries.length < mostEntries) {
     const reply = (await dialogue.ask(errors.ask)).trim();
     if (errors.clear.finds(reply)) return { entries, clear: true };

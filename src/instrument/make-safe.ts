@@ -7,7 +7,7 @@ import type { Dialogue } from './dialogue.js';
  * @throws ConnectionLostError
  */
 export async function tellMakeSafe(dialogue: Dialogue, driver: Driver): Promise<void> {
-  for (const message of driver.operations['make-safe'] ?? []) await dialogue.tell(message);
+  for (const { text } of driver.operations['make-safe'] ?? []) await dialogue.tell(text);
 }
 
 /**

@@ -1,6 +1,6 @@
 import type { SerialPort } from 'serialport';
 import type { ConnectionAddress } from '../files/bench.js';
-import { formatAddress } from '../files/connection-address.js';
+import { formatAddress, serialDefaults } from '../files/connection-address.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { InstrumentUnreachableError, PortBusyError } from './connection-errors.js';
 import type { Connection } from './connection.js';
@@ -42,16 +42,17 @@ export async function openSerial(
 ): Promise<Connection> {
   const name = formatAddress(address);
   const { SerialPort } = await loadSerialPackage(name);
+  const line = { ...serialDefaults, ...address };
   return new Promise((resolve, reject) => {
     const port = new SerialPort({
       path: address.path,
-      baudRate: address.baud,
-      dataBits: address.data,
-      parity: address.parity,
-      stopBits: address.stop,
-      rtscts: address.flow === 'hardware',
-      xon: address.flow === 'software',
-      xoff: address.flow === 'software',
+      baudRate: line.baud,
+      dataBits: line.data,
+      parity: line.parity,
+      stopBits: line.stop,
+      rtscts: line.flow === 'hardware',
+      xon: line.flow === 'software',
+      xoff: line.flow === 'software',
       lock: true,
       autoOpen: false,
     });

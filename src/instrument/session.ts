@@ -1,5 +1,5 @@
 import type { Clock } from '../clock/clock.js';
-import type { Driver, DriverReading, Role } from '../files/driver.js';
+import type { Driver, DriverReading, Message, Role } from '../files/driver.js';
 import type { Connection } from './connection.js';
 import { Dialogue } from './dialogue.js';
 import type { Trace } from './dialogue-record.js';
@@ -92,7 +92,7 @@ export class Session {
     const messages = Object.hasOwn(operations, operation) ? operations[operation] : undefined;
     if (messages === undefined)
       throw new NotInDriverError({ driver: name, what: `operation "${operation}"` });
-    await this.#send(messages.map((message) => fillMessage(message, values)));
+    await this.#send(messages.map((message) => ({ ...message, text: fillMessage(message.text, values) })));
   }
 
   /**
@@ -139,19 +139,24 @@ export class Session {
     await this.#send(this.#driver.prepare);
   }
 
-  async #send(messages: readonly string[]): Promise<void> {
-    for (const message of messages) await this.#dialogue.tell(message);
+  async #send(messages: readonly Message[]): Promise<void> {
+    for (const { text } of messages) await this.#dialogue.tell(text);
     if (messages.length === 0) return;
     const { entries } = await readErrorQueue(this.#dialogue, this.#driver.errors);
-    if (entries.length > 0) throw this.#complaint(entries, messages);
+    if (entries.length > 0) {
+      throw this.#complaint(
+        entries,
+        messages.map(({ text }) => text),
+      );
+    }
   }
 
   async #reply<Reading extends DriverReading, Result>(
     reading: Reading,
     understand: (reply: string, reading: Reading, about: About) => Result,
   ): Promise<Result> {
-    const question = reading.ask.at(-1) ?? '';
-    for (const message of reading.ask.slice(0, -1)) await this.#dialogue.tell(message);
+    const question = reading.ask.at(-1)?.text ?? '';
+    for (const { text } of reading.ask.slice(0, -1)) await this.#dialogue.tell(text);
     const reply = await this.#dialogue.ask(question);
     try {
       return understand(reply, reading, { address: this.address, question });

@@ -78,7 +78,7 @@ export class TrialWalk {
   async *messages(): AsyncGenerator<TrialResult, void, undefined> {
     const { errors, prepare, operations, readings } = this.#driver;
     if (errors !== 'none') yield await this.errorQueue(errors);
-    for (const message of prepare) yield await this.told('prepare', 'prepare', message);
+    for (const { text } of prepare) yield await this.told('prepare', 'prepare', text);
     for (const operation of Object.keys(operations)) yield* this.operation(operation);
     for (const [name, reading] of Object.entries(readings)) yield* this.reading(name, reading);
   }
@@ -126,7 +126,7 @@ export class TrialWalk {
 
   async *operation(operation: string): AsyncGenerator<TrialResult, void, undefined> {
     const reason = whyLeftOut(operation, this.#driver);
-    for (const message of this.#driver.operations[operation] ?? []) {
+    for (const { text: message } of this.#driver.operations[operation] ?? []) {
       yield reason === undefined
         ? await this.told(
             'operation',
@@ -158,8 +158,8 @@ export class TrialWalk {
   }
 
   async *reading(name: string, reading: DriverReading): AsyncGenerator<TrialResult, void, undefined> {
-    for (const message of reading.ask.slice(0, -1)) yield await this.told('reading', name, message);
-    const question = reading.ask.at(-1) ?? '';
+    for (const { text } of reading.ask.slice(0, -1)) yield await this.told('reading', name, text);
+    const question = reading.ask.at(-1)?.text ?? '';
     yield await this.#timed('reading', name, question, async () => {
       const reply = await this.#dialogue.ask(question);
       return { ...understood(reply), detail: this.#meaning(reply, reading, question) };
@@ -170,9 +170,9 @@ export class TrialWalk {
   async proofThatItIsOff(): Promise<TrialResult | undefined> {
     const reading = this.#driver.readings[this.#driver.role === 'source' ? 'output-state' : 'input-state'];
     if (reading?.kind !== 'flag') return undefined;
-    const question = reading.ask.at(-1) ?? '';
+    const question = reading.ask.at(-1)?.text ?? '';
     const proof = await this.#timed('proof', 'it is off', question, async () => {
-      for (const message of reading.ask.slice(0, -1)) await this.#dialogue.tell(message);
+      for (const { text } of reading.ask.slice(0, -1)) await this.#dialogue.tell(text);
       const reply = await this.#dialogue.ask(question);
       const on = readFlag(reply, reading, { address: this.#dialogue.address, question });
       if (!on) return { ...understood(reply), detail: 'off' };

@@ -1,3 +1,4 @@
+import { settlingOf } from '../files/driver.js';
 import { BlindSamples } from '../bench/guards.js';
 import type { OpenBench } from '../bench/open-bench.js';
 import type { Taken } from '../bench/sample.js';
@@ -131,7 +132,7 @@ export class MeterPoints {
     const point = this.#count;
     const about = of === undefined ? {} : { of };
     journal.append({ event: 'point-began', step, point, phase, set: {}, ...about });
-    await clock.sleep(Math.max(dwell, this.#meter.driver.settling), signal);
+    await clock.sleep(Math.max(dwell, settlingOf(this.#meter.driver)), signal);
     let seen = 0;
     for (let sample = 1; ; sample += 1) {
       if (sample > 1) await clock.sleep(every, signal);

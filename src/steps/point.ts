@@ -1,3 +1,4 @@
+import { settlingOf } from '../files/driver.js';
 import { LoadSwitchedOffError } from '../bench/bench-error.js';
 import { BlindSamples, valueOf } from '../bench/guards.js';
 import { moduleVoltage } from '../bench/module-voltage.js';
@@ -114,7 +115,7 @@ export class Points {
     if (plan.set.voltage !== undefined) await bench.load.setVoltage(plan.set.voltage);
     const { gaps } = bench;
     const isWhole = (): boolean => bench.gaps === gaps;
-    const settling = bench.instruments.map(({ instrument }) => instrument.driver.settling);
+    const settling = bench.instruments.map(({ instrument }) => settlingOf(instrument.driver));
     await clock.sleep(Math.max(plan.dwell, ...settling), signal);
     const seen = await this.#see(plan, point, isWhole);
     const outcome = seen !== 'interrupted' && isWhole() ? seen.outcome : 'interrupted';

@@ -116,7 +116,9 @@ describe('the load of a bench', () => {
   });
 
   it('that says it is off when it was told to be on stops the run', async () => {
-    const { load, told } = await opened({ load: { operations: { ...operations, 'input-on': ['*CLS'] } } });
+    const { load, told } = await opened({
+      load: { operations: { ...operations, 'input-on': [{ text: '*CLS' }] } },
+    });
     await expect(load.inputOn()).rejects.toMatchObject({
       code: 'DISOBEYED',
       exitCode: 69,
@@ -130,7 +132,9 @@ describe('the load of a bench', () => {
   });
 
   it('that says it is on when it was told to be off stops the run', async () => {
-    const { load, told } = await opened({ load: { operations: { ...operations, 'input-off': ['*CLS'] } } });
+    const { load, told } = await opened({
+      load: { operations: { ...operations, 'input-off': [{ text: '*CLS' }] } },
+    });
     await load.inputOn();
     await expect(load.inputOff()).rejects.toMatchObject({
       code: 'DISOBEYED',

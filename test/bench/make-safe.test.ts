@@ -49,7 +49,9 @@ describe('a bench is made safe', () => {
 
   it('though the load complains about how it was told', async () => {
     const { bench, world, lines } = await atWork({
-      load: { operations: { ...fromDriver.operations, 'make-safe': ['INP OFF', 'LAMP OFF'] } },
+      load: {
+        operations: { ...fromDriver.operations, 'make-safe': [{ text: 'INP OFF' }, { text: 'LAMP OFF' }] },
+      },
     });
     expect(await makeSafe(bench)).toEqual({ kind: 'confirmed' });
     expect(world.load.input).toBe('off');
@@ -162,7 +164,7 @@ describe('that a bench is safe is not claimed', () => {
 
   it('when the load says that it is still on, though it was told thrice', async () => {
     const { bench, told, world } = await atWork({
-      load: { operations: { ...fromDriver.operations, 'make-safe': ['*CLS'] } },
+      load: { operations: { ...fromDriver.operations, 'make-safe': [{ text: '*CLS' }] } },
     });
     expect(await makeSafe(bench)).toEqual({
       kind: 'unconfirmed',
@@ -183,7 +185,7 @@ describe('that a bench is safe is not claimed', () => {
       load: {
         readings: {
           ...fromDriver.readings,
-          'input-state': { kind: 'flag', ask: ['INP?'], trueWhen: expression('^[01]$') },
+          'input-state': { kind: 'flag', ask: [{ text: 'INP?' }], trueWhen: expression('^[01]$') },
         },
       },
     });
@@ -219,7 +221,7 @@ describe('that a bench is safe is not claimed', () => {
 
   it('leaves at most one line to the load open at a time', async () => {
     const { bench, lines } = await atWork({
-      load: { operations: { ...fromDriver.operations, 'make-safe': ['*CLS'] } },
+      load: { operations: { ...fromDriver.operations, 'make-safe': [{ text: '*CLS' }] } },
     });
     await makeSafe(bench);
     const load = lines.filter((_, index) => index !== 1);

@@ -154,7 +154,9 @@ describe('a meter', () => {
   });
 
   it('that has no value and can not be asked why has no value', async () => {
-    const readings = { voltage: { kind: 'number', ask: ['READ?'], dimension: 'voltage' } } as const;
+    const readings = {
+      voltage: { kind: 'number', ask: [{ text: 'READ?' }], dimension: 'voltage', factor: 1 },
+    } as const;
     const { read } = await loaded({
       measuredBy: 'operator',
       faults: [{ at: 0.9, what: 'meter-wrong-mode' }],

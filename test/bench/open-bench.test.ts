@@ -70,7 +70,7 @@ describe('a bench that is opened', () => {
     const notices: string[] = [];
     const { open, lines } = await nursery({
       onNotice: (text) => notices.push(text),
-      load: { release: ['INP OFF'] },
+      load: { release: [{ text: 'INP OFF' }] },
     });
     const bench = await open();
     await lines[1]?.close();

@@ -69,7 +69,11 @@ describe('before anything is switched on', () => {
     // Asked for a resistance, a meter on a live output shows overload.
     const { bench } = await opened({
       file: 'nursery-short',
-      meter: { readings: { voltage: { kind: 'number', ask: ['MEAS:RES?'], dimension: 'voltage' } } },
+      meter: {
+        readings: {
+          voltage: { kind: 'number', ask: [{ text: 'MEAS:RES?' }], dimension: 'voltage', factor: 1 },
+        },
+      },
     });
     await expect(checkOpenCircuitVoltage(bench, 15)).rejects.toMatchObject({
       message: 'before anything was switched on: the voltage of the module could not be read',

@@ -13,7 +13,8 @@ it('an order is one line, and comes back with all that makes a load safe', async
   expect(bench.simulation).toBeUndefined();
   expect(driver).toEqual(drivers.load);
   const state = driver.readings['input-state'];
-  if (state?.kind !== 'flag' || driver.errors === 'none') throw new Error('the driver has lost something');
+  if (state?.kind !== 'flag' || driver.errors === 'none' || driver.errors.kind !== 'queue')
+    throw new Error('the driver has lost something');
   expect(['ON', 'ONE', '1', '0'].map((reply) => state.trueWhen.finds(reply))).toEqual([
     true,
     false,

@@ -218,7 +218,7 @@ function expressionsOf(text: string, fileName: string): string[] {
   const { identity, errors, readings } = parseDriver(text, fileName);
   const all = [
     identity,
-    errors === 'none' ? undefined : errors.clear,
+    errors === 'none' || errors.kind !== 'queue' ? undefined : errors.clear,
     ...Object.values(readings).flatMap((reading) => {
       if (reading.kind === 'number') return [reading.pattern];
       return reading.kind === 'flag' ? [reading.trueWhen, reading.falseWhen] : [reading.channelIn];

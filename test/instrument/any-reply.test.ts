@@ -69,10 +69,18 @@ describe('whatever an instrument replies', () => {
         for (const measured of [
           readOrRefused(() => parseScpiNumber(text, about)),
           readOrRefused(() =>
-            readNumber(text, { kind: 'number', ask: ['MEAS?'], dimension: 'voltage' }, about),
+            readNumber(
+              text,
+              { kind: 'number', ask: [{ text: 'MEAS?' }], dimension: 'voltage', factor: 1 },
+              about,
+            ),
           ),
           readOrRefused(() =>
-            readNumber(text, { kind: 'number', ask: ['MEAS?'], dimension: 'voltage', pattern }, about),
+            readNumber(
+              text,
+              { kind: 'number', ask: [{ text: 'MEAS?' }], dimension: 'voltage', factor: 1, pattern },
+              about,
+            ),
           ),
         ]) {
           if (measured?.kind !== 'value') continue;
@@ -87,7 +95,7 @@ describe('whatever an instrument replies', () => {
     fc.assert(
       fc.property(reply, (text) => {
         const on = readOrRefused(() =>
-          readFlag(text, { kind: 'flag', ask: ['INP?'], trueWhen: expression('^(1|ON)$') }, about),
+          readFlag(text, { kind: 'flag', ask: [{ text: 'INP?' }], trueWhen: expression('^(1|ON)$') }, about),
         );
         if (on === true) expect(text.trim()).toMatch(/^(1|ON)$/);
         if (on === false) expect(text.trim()).toMatch(/(0|OFF|FALSE|NO)$/i);
@@ -101,7 +109,7 @@ describe('whatever an instrument replies', () => {
     fc.assert(
       fc.property(reply, (text) => {
         const channel = readOrRefused(() =>
-          readChannel(text, { kind: 'channel', ask: ['C?'], channelIn }, about),
+          readChannel(text, { kind: 'channel', ask: [{ text: 'C?' }], channelIn }, about),
         );
         if (typeof channel === 'number') expect(Number.isSafeInteger(channel) && channel >= 0).toBe(true);
       }),

@@ -79,7 +79,7 @@ describe('opening an instrument', () => {
     ['whose error queue does not get clear', { replies: { 'SYST:ERR?': '-350,"Queue overflow"' } }],
     ['whose error queue cannot be read', { replies: { 'SYST:ERR?': 'E5' } }],
     ['that does not answer about errors', { replies: { 'SYST:ERR?': undefined } }],
-    ['that refuses what prepares it', { driver: { prepare: ['SENS:SOMETHING'] } }],
+    ['that refuses what prepares it', { driver: { prepare: [{ text: 'SENS:SOMETHING' }] } }],
   ])('to make it safe is no matter of complaints: one %s can still be asked', async (_, change) => {
     const { instrument, load } = await opened({ ...change, first: 'make-safe' });
     expect(load.told.slice(0, 2)).toEqual(['', 'INP OFF']);
@@ -116,7 +116,9 @@ describe('opening an instrument', () => {
   });
 
   it('fails when what prepares it is refused, and says which message', async () => {
-    await expect(opened({ driver: { prepare: ['*CLS', 'SENS:SOMETHING'] } })).rejects.toMatchObject({
+    await expect(
+      opened({ driver: { prepare: [{ text: '*CLS' }, { text: 'SENS:SOMETHING' }] } }),
+    ).rejects.toMatchObject({
       message: 'virtual: reports -113 "Undefined header" after "*CLS", "SENS:SOMETHING"',
     });
   });
@@ -191,7 +193,14 @@ describe('an instrument', () => {
   it('is sent what a reading asks for, and the last message is the one answered', async () => {
     const { instrument, load } = await opened({
       driver: {
-        readings: { voltage: { kind: 'number', ask: ['FUNC VOLT', 'MEAS:VOLT?'], dimension: 'voltage' } },
+        readings: {
+          voltage: {
+            kind: 'number',
+            ask: [{ text: 'FUNC VOLT' }, { text: 'MEAS:VOLT?' }],
+            dimension: 'voltage',
+            factor: 1,
+          },
+        },
       },
     });
     await instrument.read('voltage');

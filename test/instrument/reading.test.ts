@@ -7,8 +7,9 @@ const about = { address: 'tcp://127.0.0.1:5025', question: 'VOL?' };
 describe('a number that a driver finds by its pattern', () => {
   const short = {
     kind: 'number',
-    ask: ['VOL?'],
+    ask: [{ text: 'VOL?' }],
     dimension: 'voltage',
+    factor: 1,
     pattern: expression('^(?<value>[+-]?[0-9.]+) ?V$'),
   } as const;
   const prefixed = { ...short, pattern: expression('^VOLT (?<value>\\S+)$') } as const;
@@ -33,14 +34,18 @@ describe('a number that a driver finds by its pattern', () => {
   );
 
   it('is the whole reply where there is no pattern', () => {
-    const plain = { kind: 'number', ask: ['VOL?'], dimension: 'voltage' } as const;
+    const plain = { kind: 'number', ask: [{ text: 'VOL?' }], dimension: 'voltage', factor: 1 } as const;
     expect(readNumber('15.21', plain, about)).toEqual({ kind: 'value', value: 15.21 });
     expect(() => readNumber('15.21V', plain, about)).toThrow(/a bare number/);
   });
 });
 
 describe('a yes or no', () => {
-  const reading = { kind: 'flag', ask: ['INP?'], trueWhen: expression('^(INPUT )?(1|ON)$') } as const;
+  const reading = {
+    kind: 'flag',
+    ask: [{ text: 'INP?' }],
+    trueWhen: expression('^(INPUT )?(1|ON)$'),
+  } as const;
 
   it.each(['1', 'ON', ' ON ', 'INPUT ON'])('is yes by "%s"', (reply) => {
     expect(readFlag(reply, reading, about)).toBe(true);
@@ -63,7 +68,7 @@ describe('a yes or no', () => {
 
 describe('a yes or no', () => {
   it('is neither in a reply that is longer than any, even where an empty one means yes', () => {
-    const reading = { kind: 'flag', ask: ['INP?'], trueWhen: expression('^1?$') } as const;
+    const reading = { kind: 'flag', ask: [{ text: 'INP?' }], trueWhen: expression('^1?$') } as const;
     expect(readFlag('', reading, about)).toBe(true);
     expect(() => readFlag(`1${' '.repeat(2000)}`, reading, about)).toThrow(/0, OFF, FALSE or NO/);
   });
@@ -72,7 +77,7 @@ describe('a yes or no', () => {
 describe('a yes or no whose no the driver describes', () => {
   const reading = {
     kind: 'flag',
-    ask: ['CONF?'],
+    ask: [{ text: 'CONF?' }],
     trueWhen: expression('^"VOLT'),
     falseWhen: expression('^"[A-Z]+'),
   } as const;
@@ -98,7 +103,7 @@ describe('a yes or no whose no the driver describes', () => {
 describe('the closed channel of a scanner', () => {
   const reading = {
     kind: 'channel',
-    ask: ['CLOSED?'],
+    ask: [{ text: 'CLOSED?' }],
     channelIn: expression('^\\(@(?<value>[0-9,]+)\\)$'),
   } as const;
 

@@ -107,7 +107,7 @@ describe('trying a driver', () => {
   });
 
   it('stops at a message that switches the input on, and makes safe at once', async () => {
-    const operations = { ...toyDriver.operations, 'input-off': ['INP ON'] };
+    const operations = { ...toyDriver.operations, 'input-off': [{ text: 'INP ON' }] };
     const { load, results, brief } = await trialOf({ driver: { operations } });
     expect(brief.slice(6)).toEqual([
       'INP ON: understood',
@@ -143,8 +143,10 @@ describe('trying a driver', () => {
     const { brief } = await trialOf({
       driver: {
         role: 'meter',
-        operations: { 'make-safe': ['*CLS'] },
-        readings: { voltage: { kind: 'number', ask: ['MEAS:VOLT?'], dimension: 'voltage' } },
+        operations: { 'make-safe': [{ text: '*CLS' }] },
+        readings: {
+          voltage: { kind: 'number', ask: [{ text: 'MEAS:VOLT?' }], dimension: 'voltage', factor: 1 },
+        },
       },
     });
     expect(brief).toEqual([

@@ -145,8 +145,8 @@ it('the load is given the limits of the run for its own protections', async () =
     load: {
       operations: {
         ...shipped.operations,
-        'protect-voltage': ['VOLT:PROT {volts}'],
-        'protect-power': ['POW:PROT {watts}'],
+        'protect-voltage': [{ text: 'VOLT:PROT {volts}' }],
+        'protect-power': [{ text: 'POW:PROT {watts}' }],
       },
     },
   });

@@ -142,7 +142,7 @@ describe('before anything is energised', () => {
     const run = await rehearse({
       steps: [ramp],
       // Its driver does not set it, and takes it as it is.
-      meter: { prepare: ['*CLS'] },
+      meter: { prepare: [{ text: '*CLS' }] },
       simulation: { faults: [{ at: 0, what: 'meter-wrong-mode' }] },
     });
     expect(run.ending).toMatchObject({

@@ -59,21 +59,21 @@ function ohmmeter(driver: Driver): Driver {
     ...driver,
     operations: {
       ...driver.operations,
-      'measure-voltage': ['CONF:VOLT:DC'],
-      'measure-resistance': ['CONF:RES'],
+      'measure-voltage': [{ text: 'CONF:VOLT:DC' }],
+      'measure-resistance': [{ text: 'CONF:RES' }],
     },
     readings: {
       ...driver.readings,
-      resistance: { kind: 'number', ask: ['READ?'], dimension: 'resistance' },
+      resistance: { kind: 'number', ask: [{ text: 'READ?' }], dimension: 'resistance', factor: 1 },
       'measures-voltage': {
         kind: 'flag',
-        ask: ['FUNC?'],
+        ask: [{ text: 'FUNC?' }],
         trueWhen: expression('VOLT'),
         falseWhen: expression('[A-Z]{3,}'),
       },
       'measures-resistance': {
         kind: 'flag',
-        ask: ['FUNC?'],
+        ask: [{ text: 'FUNC?' }],
         trueWhen: expression('RES'),
         falseWhen: expression('[A-Z]{3,}'),
       },

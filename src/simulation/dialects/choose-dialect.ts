@@ -1,4 +1,4 @@
-import type { Driver, Role } from '../../files/driver.js';
+import type { Driver, Message, Role } from '../../files/driver.js';
 import { NotUnderstoodBySimulationError, UnknownDialectError } from '../simulation-errors.js';
 import { loadAtRest } from '../virtual-load.js';
 import { configuredMeter } from './configured-meter.js';
@@ -57,16 +57,22 @@ interface DriverMessage {
 
 /** All that the driver may send, with 1 for each value. */
 function messagesOf(driver: Driver): readonly DriverMessage[] {
-  const order = (text: string): DriverMessage => ({ text: text.replace(/\{\w+\}/g, '1'), answered: false });
-  const asked = (ask: readonly string[]): DriverMessage[] =>
-    ask.map((text, index) => ({ ...order(text), answered: index === ask.length - 1 }));
+  const order = ({ text }: Message): DriverMessage => ({
+    text: text.replace(/\{\w+\}/g, '1'),
+    answered: false,
+  });
+  const asked = (ask: readonly Message[]): DriverMessage[] =>
+    ask.map((message, index) => ({ ...order(message), answered: index === ask.length - 1 }));
   return [
-    ...asked([driver.identify]),
-    ...(driver.errors === 'none' ? [] : asked([driver.errors.ask])),
+    ...driver.remote.map(order),
+    ...asked([{ text: driver.identify }]),
+    ...(driver.errors === 'none' ? [] : asked([{ text: driver.errors.ask }])),
+    ...(driver.ready === undefined ? [] : asked([{ text: driver.ready.ask }])),
     ...driver.prepare.map(order),
     ...Object.values(driver.operations).flatMap((messages) => messages.map(order)),
     ...Object.values(driver.readings).flatMap(({ ask }) => asked(ask)),
     ...driver.release.map(order),
+    ...driver.local.map(order),
   ];
 }
 

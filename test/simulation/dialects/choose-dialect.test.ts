@@ -22,7 +22,9 @@ describe('the dialect for a driver', () => {
     const byQuery = {
       ...meterDriver,
       prepare: [],
-      readings: { voltage: { kind: 'number', ask: ['MEAS:VOLT:DC?'], dimension: 'voltage' } },
+      readings: {
+        voltage: { kind: 'number', ask: [{ text: 'MEAS:VOLT:DC?' }], dimension: 'voltage', factor: 1 },
+      },
     } as const;
     expect(dialectFor(byQuery).name).toBe('query-meter');
   });
@@ -39,7 +41,7 @@ describe('the dialect for a driver', () => {
   it('is refused with the message that none understands', () => {
     const strange = {
       ...loadDriver,
-      operations: { ...loadDriver.operations, 'set-current': ['LOADCURRENT {amps}'] },
+      operations: { ...loadDriver.operations, 'set-current': [{ text: 'LOADCURRENT {amps}' }] },
     };
     const error = thrownBy(() => dialectFor(strange));
     expect(error).toBeInstanceOf(NotUnderstoodBySimulationError);
@@ -49,7 +51,9 @@ describe('the dialect for a driver', () => {
   it('is refused for a question that would never be answered', () => {
     const mute = {
       ...meterDriver,
-      readings: { voltage: { kind: 'number', ask: ['CONF:VOLT:DC'], dimension: 'voltage' } },
+      readings: {
+        voltage: { kind: 'number', ask: [{ text: 'CONF:VOLT:DC' }], dimension: 'voltage', factor: 1 },
+      },
     } as const;
     expect(thrownBy(() => dialectFor(mute))).toMatchObject({ unknownMessage: 'CONF:VOLT:DC' });
   });
