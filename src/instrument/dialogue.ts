@@ -1,5 +1,6 @@
 import type { Clock } from '../clock/clock.js';
 import type { Wire } from '../files/driver.js';
+import type { Seconds } from '../quantity/quantity.js';
 import type { Connection } from './connection.js';
 import type { Trace } from './dialogue-record.js';
 import { Line } from './line.js';
@@ -19,6 +20,23 @@ export interface DialogueParts {
   readonly isIdentity?: (reply: string) => boolean;
   readonly trace?: Trace;
   readonly onNotice?: OnNotice;
+}
+
+export interface Asking {
+  /** The instrument hears nothing for so long after the question. */
+  readonly rest?: Seconds;
+  /** How long the answer may take, in place of the wire's timeout: for what is answered when all is done. */
+  readonly within?: Seconds;
+}
+
+interface Question<Reply> {
+  readonly message: string;
+  readonly rest?: Seconds | undefined;
+  readonly cut: (reader: ReplyReader) => Reply | undefined;
+  /** Longest silence. */
+  readonly silence: Seconds;
+  /** Longest wait in all. */
+  readonly atMost: Seconds;
 }
 
 /** How long a block may take in all, and getting back in step, in timeouts. */
@@ -69,21 +87,22 @@ export class Dialogue {
   }
 
   /**
-   * Sends a message that has no answer.
+   * Sends a message that has no answer. The instrument hears nothing for the `rest` after it, so nothing is
+   * sent before that is over; it is not waited for here.
    * @throws ConnectionLostError
    */
-  tell(message: string): Promise<void> {
-    return this.#turns.take(() => this.#line.send(message));
+  tell(message: string, rest?: Seconds): Promise<void> {
+    return this.#turns.take(() => this.#line.send(message, rest));
   }
 
   /**
-   * Sends a question and waits for its answer, a line, for the wire's timeout in all.
+   * Sends a question and waits for its answer, a line, for the wire's timeout in all, or as long as is said.
    * @throws InstrumentSilentError, ReplyTooLongError, OutOfStepError, ConnectionLostError
    */
-  async ask(message: string): Promise<string> {
-    const timeout = this.#wire.timeout;
+  async ask(message: string, { rest, within = this.#wire.timeout }: Asking = {}): Promise<string> {
     return this.#turns.take(async () => {
-      const reply = await this.#question(message, (reader) => this.#answer(reader, message), timeout);
+      const cut = (reader: ReplyReader): string | undefined => this.#answer(reader, message);
+      const reply = await this.#question({ message, rest, cut, silence: within, atMost: within });
       if (message === this.#identify) this.#learn(reply);
       return reply;
     });
@@ -95,8 +114,9 @@ export class Dialogue {
    * @throws as `ask`, and ReplyNotUnderstoodError when the answer is no block
    */
   askBlock(message: string): Promise<Uint8Array> {
+    const silence = this.#wire.timeout;
     return this.#turns.take(() =>
-      this.#question(message, (reader) => reader.block(), blockPatience * this.#wire.timeout),
+      this.#question({ message, cut: (reader) => reader.block(), silence, atMost: blockPatience * silence }),
     );
   }
 
@@ -110,27 +130,19 @@ export class Dialogue {
     return this.#connection.close();
   }
 
-  async #question<Reply>(
-    message: string,
-    cut: (reader: ReplyReader) => Reply | undefined,
-    atMost: number,
-  ): Promise<Reply> {
+  async #question<Reply>({ message, rest, cut, silence, atMost }: Question<Reply>): Promise<Reply> {
     const clean = await this.#clearLine();
     if (!clean || !this.#inStep) await this.#getInStep();
     // In step again only once this question is answered: whatever is thrown below leaves that open.
     this.#inStep = false;
-    await this.#send(message);
-    const reply = await this.#line.reply(cut, {
-      since: this.#line.sentAt,
-      silence: this.#wire.timeout,
-      atMost,
-    });
+    await this.#send(message, rest);
+    const reply = await this.#line.reply(cut, { since: this.#line.sentAt, silence, atMost });
     if (reply === undefined) {
       this.#notice({ kind: 'out-of-step', question: visible(message) });
       throw new InstrumentSilentError({
         address: this.address,
         question: message,
-        timeout: this.#wire.timeout,
+        timeout: silence,
         begun: this.#line.begun(),
       });
     }
@@ -156,9 +168,9 @@ export class Dialogue {
     else if (this.#identity !== identity) this.#inStep = false;
   }
 
-  async #send(message: string): Promise<void> {
+  async #send(message: string, rest?: Seconds): Promise<void> {
     if (message === this.#identify) this.#identitiesDue++;
-    await this.#line.send(message);
+    await this.#line.send(message, rest);
   }
 
   /** Whether what was thrown away, if anything, had come to an end. */

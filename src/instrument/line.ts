@@ -38,6 +38,8 @@ export class Line {
   readonly #trace: Trace | undefined;
   readonly #reader: ReplyReader;
   #quietSince = -Infinity;
+  /** The instrument hears nothing before. */
+  #deafUntil = -Infinity;
   #sentAt = -Infinity;
   /** What comes after a wait is over is not stamped as if it had come within it. */
   #notBefore = -Infinity;
@@ -55,13 +57,17 @@ export class Line {
     return this.#sentAt;
   }
 
-  /** @throws ConnectionLostError */
-  async send(message: string): Promise<void> {
-    const pause = this.#quietSince + this.#wire.gap - this.#clock.now();
+  /**
+   * Sends a message as soon as the instrument will hear it; after it, it hears nothing for the `rest`.
+   * @throws ConnectionLostError
+   */
+  async send(message: string, rest: Seconds = 0): Promise<void> {
+    const pause = Math.max(this.#quietSince + this.#wire.gap, this.#deafUntil) - this.#clock.now();
     if (pause > 0) await this.#clock.sleep(pause);
     const bytes = Buffer.from(message + this.#wire.sendEnd, 'latin1');
     await this.#connection.write(bytes);
     this.#sentAt = this.#quietSince = this.#clock.now();
+    this.#deafUntil = this.#sentAt + rest;
     this.#trace?.({ t: this.#sentAt, direction: 'sent', bytes });
   }
 
