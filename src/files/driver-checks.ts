@@ -10,6 +10,8 @@ import {
   type Readiness,
   type Role,
 } from './driver.js';
+import { dialogueProblems } from './driver-dialogue-checks.js';
+import type { Exchange } from './driver-dialogue.js';
 import { didYouMean } from '../quantity/nearest.js';
 import { readingDimensions } from './reading-dimensions.js';
 import type { Complaint } from './yaml-document.js';
@@ -28,6 +30,7 @@ interface DriverFile {
   readonly operations: Readonly<Record<string, readonly Message[]>>;
   readonly readings: Readonly<Record<string, DriverReading>>;
   readonly accuracy: Readonly<Record<string, unknown>>;
+  readonly dialogue?: readonly Exchange[] | undefined;
 }
 
 /** What stands for the value in the messages of an operation that has one. */
@@ -60,6 +63,7 @@ export function driverProblems(driver: DriverFile): Complaint[] {
     ...accuracyWithoutReading(driver),
     ...channelProblems(driver),
     ...neverReady(driver),
+    ...dialogueProblems(driver),
   ];
 }
 

@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { choice, count, line, name, quantity } from './building-blocks.js';
 import { camelKeys, withoutHeader } from './camel-keys.js';
 import { driverProblems } from './driver-checks.js';
+import { dialogueSchema } from './driver-dialogue-schema.js';
 import { errorsSchema, readySchema } from './driver-errors-schema.js';
 import { regularExpression } from './driver-expression.js';
 import { messages, messageText } from './driver-message-schema.js';
@@ -89,6 +90,7 @@ export const driverSchema: z.ZodType<Driver> = z
       .prefault({})
       .describe('What the instrument can stand.'),
     accuracy: z.strictObject(accuracy).default({}).describe('What the maker promises, by reading.'),
+    dialogue: dialogueSchema.exactOptional(),
   })
   .meta({ title: 'railproof driver', description: 'How one family of instruments is spoken to.' })
   .superRefine((driver, context) => {

@@ -1,5 +1,6 @@
 import type { Amperes, Dimension, Ratio, Seconds, Volts, Watts } from '../quantity/quantity.js';
 import type { SerialSettings } from './bench.js';
+import type { Exchange } from './driver-dialogue.js';
 import type { Expression } from './expression.js';
 
 export type Role = 'load' | 'meter' | 'scanner' | 'thermometer' | 'source';
@@ -40,6 +41,8 @@ export interface Driver {
   };
   /** What the maker promises, by reading name. */
   readonly accuracy: Readonly<Record<string, Accuracy>>;
+  /** What must be sent, and what answers must be taken for: how the driver is tested without an instrument. */
+  readonly dialogue?: readonly Exchange[];
 }
 
 export interface Wire {
