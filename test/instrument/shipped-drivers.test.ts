@@ -11,13 +11,18 @@ const shipped = (name: string) => parseDriver(readFileSync(new URL(name, folder)
 const about = { address: 'serial:', question: '?' };
 
 describe('the shipped drivers', () => {
-  it('are the six families', () => {
+  it('are the eleven families', () => {
     expect(files.sort()).toEqual([
+      'load-channel-scpi.yaml',
       'load-input-scpi.yaml',
+      'load-remote-scpi.yaml',
       'load-short-scpi.yaml',
+      'load-source-scpi.yaml',
+      'meter-function-scpi.yaml',
       'meter-query-scpi.yaml',
       'meter-read-scpi.yaml',
       'scanner-route-scpi.yaml',
+      'source-output-scpi.yaml',
       'thermometer-query-scpi.yaml',
     ]);
   });
