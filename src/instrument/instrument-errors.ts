@@ -1,4 +1,7 @@
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Seconds } from '../quantity/quantity.js';
+import type { DriverPart } from './driver-part.js';
 import type { ScpiError } from './scpi-error.js';
 import { visible } from './visible.js';
 
@@ -10,8 +13,15 @@ export class InstrumentComplainedError extends RailproofError {
   readonly entries: readonly ScpiError[];
   /** The messages that were sent before the queue was read. */
   readonly after: readonly string[];
+  /** What in the driver says to send them. */
+  readonly part: DriverPart | undefined;
 
-  constructor(facts: { address: string; entries: readonly ScpiError[]; after: readonly string[] }) {
+  constructor(facts: {
+    address: string;
+    entries: readonly ScpiError[];
+    after: readonly string[];
+    part?: DriverPart | undefined;
+  }) {
     const entries = facts.entries.map(({ number, text }) => `${number} "${visible(text)}"`);
     const shown = entries.length > 3 ? [...entries.slice(0, 3), `and ${entries.length - 3} more`] : entries;
     const after = facts.after.map((message) => `"${visible(message)}"`).join(', ');
@@ -22,6 +32,49 @@ export class InstrumentComplainedError extends RailproofError {
     this.address = facts.address;
     this.entries = facts.entries;
     this.after = facts.after;
+    this.part = facts.part;
+  }
+}
+
+/** Told to do something and asked whether it has, an instrument did not say so in time. */
+export class NotReadyError extends RailproofError {
+  readonly code = 'NOT_READY';
+  readonly exitCode = exitCodes.instrument;
+  readonly address: string;
+  /** What it was told. */
+  readonly told: string;
+  readonly question: string;
+  /** The last one, escaped and cut; undefined where none came. */
+  readonly answer: string | undefined;
+  readonly within: Seconds;
+  readonly part: DriverPart | undefined;
+
+  constructor(facts: {
+    address: string;
+    told: string;
+    question: string;
+    answer: string | undefined;
+    within: Seconds;
+    part: DriverPart | undefined;
+    cause?: unknown;
+  }) {
+    const answer = facts.answer === undefined ? undefined : visible(facts.answer);
+    const said = answer === undefined ? 'without an answer' : `and answered "${answer}" last`;
+    super(
+      `${facts.address} was not ready within ${formatQuantity(facts.within, 'time')} of "${visible(facts.told)}": ` +
+        `it was asked "${visible(facts.question)}", ${said}`,
+      {
+        advice:
+          "Does it wait for something at its panel? If it is only slow, give the driver's ready a longer within; else compare its ask and when with the manual.",
+        cause: facts.cause,
+      },
+    );
+    this.address = facts.address;
+    this.told = facts.told;
+    this.question = facts.question;
+    this.answer = answer;
+    this.within = facts.within;
+    this.part = facts.part;
   }
 }
 

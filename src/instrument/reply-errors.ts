@@ -1,5 +1,6 @@
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import type { Seconds } from '../quantity/quantity.js';
+import type { DriverPart } from './driver-part.js';
 import { visible } from './visible.js';
 
 /** A question was not answered in time. */
@@ -42,8 +43,16 @@ export class ReplyNotUnderstoodError extends RailproofError {
   readonly expected: string;
   readonly address: string | undefined;
   readonly question: string | undefined;
+  /** What in the driver says how to read it, where a driver does. */
+  readonly part: DriverPart | undefined;
 
-  constructor(facts: { reply: Uint8Array | string; expected: string; address?: string; question?: string }) {
+  constructor(facts: {
+    reply: Uint8Array | string;
+    expected: string;
+    address?: string;
+    question?: string;
+    part?: DriverPart | undefined;
+  }) {
     const reply = visible(facts.reply);
     const who = facts.address === undefined ? '' : `${facts.address} answered `;
     const what = facts.question === undefined ? '' : `"${visible(facts.question)}" with `;
@@ -55,6 +64,7 @@ export class ReplyNotUnderstoodError extends RailproofError {
     this.expected = facts.expected;
     this.address = facts.address;
     this.question = facts.question;
+    this.part = facts.part;
   }
 }
 

@@ -1,0 +1,19 @@
+/**
+ * The part of a driver that was at work when something went wrong, so that the line of its file can be named
+ * to whoever must mend it.
+ */
+export interface DriverPart {
+  /** The driver's name. */
+  readonly driver: string;
+  readonly section:
+    'remote' | 'identify' | 'errors' | 'ready' | 'prepare' | 'release' | 'local' | 'operations' | 'readings';
+  /** Of the operation or the reading. */
+  readonly name?: string;
+  /** Which of its messages, where that is known: several may be told before anything is asked about them. */
+  readonly index?: number;
+}
+
+/** Where it stands in the driver's file: `operations`, `set-current`, `0`. */
+export function pathOf({ section, name, index }: DriverPart): readonly (string | number)[] {
+  return [section, ...(name === undefined ? [] : [name]), ...(index === undefined ? [] : [index])];
+}
