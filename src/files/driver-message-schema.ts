@@ -35,7 +35,7 @@ export const messages = z.array(message).max(20);
 
 /** What is sent for a reading. */
 export const ask = z
-  .union([message, messages.min(1)], {
+  .union([messages.min(1), message], {
     error: ({ input }) => `${found(input)}; a message, or a list of messages, is needed`,
   })
   .transform((given): readonly Message[] => (Array.isArray(given) ? given : [given]))

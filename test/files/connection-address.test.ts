@@ -8,22 +8,21 @@ import {
   parseAddress,
 } from '../../src/files/connection-address.js';
 
-const plainLine = { kind: 'serial', baud: 9600, data: 8, parity: 'none', stop: 1, flow: 'none' } as const;
-
 describe('an address is read', () => {
   it.each<[string, ConnectionAddress]>([
     ['tcp://127.0.0.1:5025', { kind: 'tcp', host: '127.0.0.1', port: 5025 }],
     ['tcp://bench_load.lan:1', { kind: 'tcp', host: 'bench_load.lan', port: 1 }],
     ['tcp://[::1]:65535', { kind: 'tcp', host: '::1', port: 65535 }],
     ['tcp://[fe80::1%eth0]:5025', { kind: 'tcp', host: 'fe80::1%eth0', port: 5025 }],
-    ['serial:/dev/ttyUSB0', { ...plainLine, path: '/dev/ttyUSB0' }],
-    ['serial:COM3', { ...plainLine, path: 'COM3' }],
-    ['serial:/dev/ttyUSB0?', { ...plainLine, path: '/dev/ttyUSB0' }],
-    ['serial:/dev/ttyUSB0?baud=115200', { ...plainLine, path: '/dev/ttyUSB0', baud: 115200 }],
+    ['serial:/dev/ttyUSB0', { kind: 'serial', path: '/dev/ttyUSB0' }],
+    ['serial:COM3', { kind: 'serial', path: 'COM3' }],
+    ['serial:/dev/ttyUSB0?', { kind: 'serial', path: '/dev/ttyUSB0' }],
+    ['serial:/dev/ttyUSB0?baud=115200', { kind: 'serial', path: '/dev/ttyUSB0', baud: 115200 }],
     [
       'serial:/dev/ttyS1?flow=hardware&stop=2&parity=even&data=7&baud=1200',
       { kind: 'serial', path: '/dev/ttyS1', baud: 1200, data: 7, parity: 'even', stop: 2, flow: 'hardware' },
     ],
+    ['serial:/dev/ttyACM0?rts=off&dtr=on', { kind: 'serial', path: '/dev/ttyACM0', dtr: 'on', rts: 'off' }],
     ['replay:runs/a b.jsonl', { kind: 'replay', file: 'runs/a b.jsonl' }],
     ['simulated:', { kind: 'simulated' }],
     ['simulated:load-short', { kind: 'simulated', dialect: 'load-short' }],
@@ -44,7 +43,11 @@ describe('what is no address says why', () => {
     ['serial:', 'serial: needs a port: serial:/dev/ttyUSB0?baud=9600'],
     ['serial:?baud=9600', 'serial: needs a port: serial:/dev/ttyUSB0?baud=9600'],
     ['serial:/dev/ttyUSB0?baut=9600', "a serial line has no option 'baut'; did you mean 'baud'?"],
-    ['serial:/dev/ttyUSB0?x=1', "a serial line has no option 'x'; known are baud, data, parity, stop, flow"],
+    [
+      'serial:/dev/ttyUSB0?x=1',
+      "a serial line has no option 'x'; known are baud, data, parity, stop, flow, dtr, rts",
+    ],
+    ['serial:/dev/ttyUSB0?dtr=1', 'dtr=1 is not known; on or off is needed'],
     ['serial:/dev/ttyUSB0?parity=evn', "parity=evn is not known; did you mean 'even'?"],
     ['serial:/dev/ttyUSB0?data=', 'data= is not known; 7 or 8 is needed'],
     ['serial:/dev/ttyUSB0?baud=fast', 'baud=fast will not do; a speed from 50 to 4000000 is needed'],
@@ -70,15 +73,15 @@ it('the forms we advise are all good addresses', () => {
 });
 
 it.each<[string, string]>([
-  ['serial:/dev/ttyUSB0', 'serial:/dev/ttyUSB0?baud=9600'],
-  ['serial:/dev/ttyUSB0?stop=2&parity=odd', 'serial:/dev/ttyUSB0?baud=9600&parity=odd&stop=2'],
+  ['serial:/dev/ttyUSB0', 'serial:/dev/ttyUSB0'],
+  ['serial:/dev/ttyUSB0?stop=2&parity=odd', 'serial:/dev/ttyUSB0?parity=odd&stop=2'],
   [
-    'serial:/dev/ttyUSB0?flow=hardware&stop=2&parity=even&data=7',
-    'serial:/dev/ttyUSB0?baud=9600&data=7&parity=even&stop=2&flow=hardware',
+    'serial:/dev/ttyUSB0?dtr=on&flow=hardware&stop=2&parity=even&baud=9600',
+    'serial:/dev/ttyUSB0?baud=9600&parity=even&stop=2&flow=hardware&dtr=on',
   ],
   ['tcp://[::1]:5025', 'tcp://[::1]:5025'],
   ['simulated:', 'simulated:'],
-])('%s is written without what is the default', (text, written) => {
+])('%s is written with what it says, in one order', (text, written) => {
   expect(formatAddress(parseAddress(text))).toBe(written);
 });
 
@@ -90,15 +93,20 @@ it('reading what was written gives the same address', () => {
       host: fc.oneof(fc.ipV4(), fc.ipV6(), fc.domain()),
       port: fc.integer({ min: 1, max: 65535 }),
     }),
-    fc.record({
-      kind: fc.constant('serial' as const),
-      path,
-      baud: fc.integer({ min: 50, max: 4_000_000 }),
-      data: fc.constantFrom(7, 8),
-      parity: fc.constantFrom('none', 'even', 'odd'),
-      stop: fc.constantFrom(1, 2),
-      flow: fc.constantFrom('none', 'hardware', 'software'),
-    }),
+    fc.record(
+      {
+        kind: fc.constant('serial' as const),
+        path,
+        baud: fc.integer({ min: 50, max: 4_000_000 }),
+        data: fc.constantFrom(7, 8),
+        parity: fc.constantFrom('none', 'even', 'odd'),
+        stop: fc.constantFrom(1, 2),
+        flow: fc.constantFrom('none', 'hardware', 'software'),
+        dtr: fc.constantFrom('on', 'off'),
+        rts: fc.constantFrom('on', 'off'),
+      },
+      { requiredKeys: ['kind', 'path'] },
+    ),
     fc.record({ kind: fc.constant('replay' as const), file: path }),
     fc.record(
       { kind: fc.constant('simulated' as const), dialect: fc.stringMatching(/^[a-z][a-z0-9-]{0,20}$/) },

@@ -16,15 +16,7 @@ it('the example of the design is read', () => {
       load: { driver: 'load-input-scpi', connection: { kind: 'tcp', host: '127.0.0.1', port: 5025 } },
       meter: {
         driver: 'meter-read-scpi',
-        connection: {
-          kind: 'serial',
-          path: '/dev/ttyUSB0',
-          baud: 9600,
-          data: 8,
-          parity: 'none',
-          stop: 1,
-          flow: 'none',
-        },
+        connection: { kind: 'serial', path: '/dev/ttyUSB0', baud: 9600 },
       },
     },
     leads: { resistance: 0.035, uncertainty: 0.005 },

@@ -5,15 +5,7 @@ import { openSerial, type SerialAddress } from '../../src/instrument/serial-conn
 import { servePty, withoutSocat } from './fixtures/serve-pty.js';
 import { prompt } from './fixtures/talkers.js';
 
-const at = (path: string): SerialAddress => ({
-  kind: 'serial',
-  path,
-  baud: 9600,
-  data: 8,
-  parity: 'none',
-  stop: 1,
-  flow: 'none',
-});
+const at = (path: string): SerialAddress => ({ kind: 'serial', path });
 
 describe('a serial connection', () => {
   it.skipIf(withoutSocat)('carries bytes there and back', async () => {
@@ -30,7 +22,7 @@ describe('a serial connection', () => {
 
   it.skipIf(withoutSocat)('with other line settings is opened all the same', async () => {
     const address = await servePty(prompt());
-    const connection = await openSerial({ ...address, baud: 19200, data: 8, stop: 2, flow: 'software' });
+    const connection = await openSerial({ ...address, baud: 19200, stop: 2, flow: 'software' });
     expect(connection.address).toBe(`serial:${address.path}?baud=19200&stop=2&flow=software`);
     await connection.close();
     await connection.close();
