@@ -1,9 +1,12 @@
 import type { Clock } from '../clock/clock.js';
 import { type Connect, connectorFor } from '../instrument/connect.js';
+import type { Connection } from '../instrument/connection.js';
+import type { ReplayAddress } from '../instrument/replay-connection.js';
 import type { OpenedSimulation } from '../simulation/open-simulation.js';
 
 /** The ways to connect, each loaded only when it is used. */
 export function connectors(clock: Clock, simulation?: OpenedSimulation): Connect {
+  let replay: ((address: ReplayAddress) => Promise<Connection>) | undefined;
   return connectorFor({
     tcp: async (address, _driver, _role, within) =>
       (await import('../instrument/tcp-connection.js')).openTcp(
@@ -11,8 +14,11 @@ export function connectors(clock: Clock, simulation?: OpenedSimulation): Connect
         within === undefined ? {} : { connecting: within },
       ),
     serial: async (address) => (await import('../instrument/serial-connection.js')).openSerial(address),
-    replay: async (address) =>
-      (await import('../instrument/replay-connection.js')).openReplay(address, clock),
+    replay: async (address) => {
+      const { replays } = await import('../instrument/replay-connection.js');
+      replay ??= replays(clock);
+      return replay(address);
+    },
     ...(simulation === undefined
       ? {}
       : {

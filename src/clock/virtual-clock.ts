@@ -25,6 +25,11 @@ export class VirtualClock implements Clock {
     return new Date(this.#began.getTime() + this.#now * 1000);
   }
 
+  /** It is exactly that moment now, or a later one already: a wait until then would be a sum, and rounded. */
+  reach(moment: number): void {
+    this.#now = Math.max(this.#now, moment);
+  }
+
   async sleep(seconds: number, signal?: AbortSignal): Promise<void> {
     signal?.throwIfAborted();
     this.#now += Math.max(0, seconds);

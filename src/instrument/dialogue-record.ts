@@ -1,12 +1,25 @@
 import type { Seconds } from '../quantity/quantity.js';
 
-/** One thing that went over the line, as a dialogue reports it while it goes on. */
-export interface TraceEntry {
-  /** By the clock of the dialogue. */
+interface At<Kind extends string> {
+  readonly kind: Kind;
   readonly t: Seconds;
-  readonly direction: 'sent' | 'received';
-  readonly bytes: Uint8Array;
 }
+
+/** A connection was made, to that address. */
+export type Opened = At<'opened'> & { readonly address: string };
+/** None could be made. */
+export type NotOpened = At<'unreachable' | 'busy'> & { readonly reason: string };
+export type Sent = At<'sent'> & { readonly bytes: Uint8Array };
+export type Received = At<'received'> & { readonly bytes: Uint8Array };
+export type Lost = At<'lost'> & { readonly reason: string };
+/**
+ * How often nothing had come when it was looked for. It is there only where something came before anything more
+ * was sent: then it tells at which look it came.
+ */
+export type Silent = At<'silent'> & { readonly times: number };
+
+/** One thing that happened on a line. */
+export type TraceEntry = Opened | NotOpened | Sent | Received | Lost | Silent;
 
 export type Trace = (entry: TraceEntry) => void;
 
@@ -14,14 +27,33 @@ const format = 'railproof/dialogue 1';
 
 /**
  * The file format of a recorded dialogue is JSON Lines: a first line that names the format and the address,
- * then a line for each piece sent or received. Text is Latin-1, one character a byte, so every byte survives.
+ * then a line for each thing that happened: `{"t":0.1,"sent":"*IDN?\n"}`. Text is Latin-1, one character a
+ * byte, so every byte survives, and JSON keeps every digit of a time. Times are in seconds: those of the
+ * dialogue itself, or, from the first `opened` or `unreachable` on, those of a run, which all its dialogues share.
  */
 export function dialogueHeader(address: string): string {
   return `${JSON.stringify({ format, address })}\n`;
 }
 
-export function dialogueLine({ t, direction, bytes }: TraceEntry): string {
-  return `${JSON.stringify({ t, [direction]: Buffer.from(bytes).toString('latin1') })}\n`;
+export function dialogueLine(entry: TraceEntry): string {
+  const { t, kind } = entry;
+  return `${JSON.stringify({ t, [kind]: contentOf(entry) })}\n`;
+}
+
+function contentOf(entry: TraceEntry): string | number {
+  switch (entry.kind) {
+    case 'sent':
+    case 'received':
+      return Buffer.from(entry.bytes).toString('latin1');
+    case 'opened':
+      return entry.address;
+    case 'unreachable':
+    case 'busy':
+    case 'lost':
+      return entry.reason;
+    case 'silent':
+      return entry.times;
+  }
 }
 
 /** The address named by the first line, or undefined when that is not what the line is. */
@@ -34,16 +66,33 @@ export function readDialogueHeader(line: string): string | undefined {
 
 /** One line after the first, or undefined when it is not in the format. */
 export function readDialogueLine(line: string): TraceEntry | undefined {
-  const entry = objectIn(line);
-  if (entry === undefined || Object.keys(entry).length !== 2) return undefined;
-  const t = entry['t'];
-  if (typeof t !== 'number' || !Number.isFinite(t)) return undefined;
-  for (const direction of ['sent', 'received'] as const) {
-    const text = entry[direction];
-    if (typeof text === 'string')
-      return isLatin1(text) ? { t, direction, bytes: Buffer.from(text, 'latin1') } : undefined;
+  const { t, ...others } = objectIn(line) ?? {};
+  const [content, ...more] = Object.entries(others);
+  if (typeof t !== 'number' || !Number.isFinite(t) || content === undefined || more.length > 0)
+    return undefined;
+  const [kind, value] = content;
+  return typeof value === 'string' ? entryOfText(t, kind, value) : entryOfCount(t, kind, value);
+}
+
+function entryOfText(t: Seconds, kind: string, text: string): TraceEntry | undefined {
+  switch (kind) {
+    case 'sent':
+    case 'received':
+      return isLatin1(text) ? { t, kind, bytes: Buffer.from(text, 'latin1') } : undefined;
+    case 'opened':
+      return { t, kind, address: text };
+    case 'unreachable':
+    case 'busy':
+    case 'lost':
+      return { t, kind, reason: text };
+    default:
+      return undefined;
   }
-  return undefined;
+}
+
+function entryOfCount(t: Seconds, kind: string, times: unknown): TraceEntry | undefined {
+  const isCount = Number.isSafeInteger(times) && (times as number) > 0;
+  return kind === 'silent' && isCount ? { t, kind, times: times as number } : undefined;
 }
 
 function isLatin1(text: string): boolean {

@@ -2,7 +2,6 @@ import type { Clock } from '../clock/clock.js';
 import type { Wire } from '../files/driver.js';
 import type { Seconds } from '../quantity/quantity.js';
 import type { Connection } from './connection.js';
-import type { Trace } from './dialogue-record.js';
 import { Line } from './line.js';
 import { noticeText, type Notice, type OnNotice } from './notice.js';
 import { InstrumentSilentError, OutOfStepError, ReplyTooLongError } from './reply-errors.js';
@@ -18,7 +17,6 @@ export interface DialogueParts {
   readonly identify: string;
   /** Whether a reply may be this instrument's identity; any that is not empty will do when left out. */
   readonly isIdentity?: (reply: string) => boolean;
-  readonly trace?: Trace;
   readonly onNotice?: OnNotice;
 }
 
@@ -74,7 +72,7 @@ export class Dialogue {
 
   constructor(parts: DialogueParts) {
     this.#connection = parts.connection;
-    this.#line = new Line(parts.connection, parts.wire, parts.clock, parts.trace);
+    this.#line = new Line(parts.connection, parts.wire, parts.clock);
     this.#wire = parts.wire;
     this.#clock = parts.clock;
     this.#identify = parts.identify;

@@ -2,7 +2,6 @@ import type { Clock } from '../clock/clock.js';
 import type { Wire } from '../files/driver.js';
 import type { Seconds } from '../quantity/quantity.js';
 import type { Connection } from './connection.js';
-import type { Trace } from './dialogue-record.js';
 import { ReplyReader } from './reply-reader.js';
 
 export interface Patience {
@@ -27,29 +26,25 @@ export interface Unasked {
 const mostUnasked = 1024 * 1024;
 
 /**
- * Messages out and replies in over one connection, with the ends of line, the gap and the trace. It knows
- * nothing of which reply belongs to which message.
+ * Messages out and replies in over one connection, with the ends of line and the gap. It knows nothing of
+ * which reply belongs to which message.
  */
 export class Line {
   readonly address: string;
   readonly #connection: Connection;
   readonly #wire: Wire;
   readonly #clock: Clock;
-  readonly #trace: Trace | undefined;
   readonly #reader: ReplyReader;
   #quietSince = -Infinity;
   /** The instrument hears nothing before. */
   #deafUntil = -Infinity;
   #sentAt = -Infinity;
-  /** What comes after a wait is over is not stamped as if it had come within it. */
-  #notBefore = -Infinity;
 
-  constructor(connection: Connection, wire: Wire, clock: Clock, trace?: Trace) {
+  constructor(connection: Connection, wire: Wire, clock: Clock) {
     this.address = connection.address;
     this.#connection = connection;
     this.#wire = wire;
     this.#clock = clock;
-    this.#trace = trace;
     this.#reader = new ReplyReader(connection.address, wire.replyEnd);
   }
 
@@ -68,7 +63,6 @@ export class Line {
     await this.#connection.write(bytes);
     this.#sentAt = this.#quietSince = this.#clock.now();
     this.#deafUntil = this.#sentAt + rest;
-    this.#trace?.({ t: this.#sentAt, direction: 'sent', bytes });
   }
 
   /**
@@ -86,11 +80,8 @@ export class Line {
       if (reply !== undefined) return reply;
       const left = deadline - this.#clock.now();
       const bytes = left > 0 ? await this.#connection.receive(left) : undefined;
-      if (bytes === undefined) {
-        this.#notBefore = deadline + 1e-6;
-        return undefined;
-      }
-      this.#received(bytes, Math.min(this.#clock.now(), deadline));
+      if (bytes === undefined) return undefined;
+      this.#quietSince = this.#clock.now();
       this.#reader.push(bytes);
       deadline = Math.min(this.#clock.now() + silence, end);
     }
@@ -109,17 +100,12 @@ export class Line {
     while (size <= mostUnasked) {
       const bytes = await this.#connection.receive(0);
       if (bytes === undefined) break;
-      this.#received(bytes, Math.max(this.#clock.now(), this.#notBefore));
+      this.#quietSince = this.#clock.now();
       if (size === 0) begins = bytes;
       size += bytes.length;
       last = bytes;
     }
     return { size, begins, unfinished: size > mostUnasked || !this.#isWhole(last) };
-  }
-
-  #received(bytes: Uint8Array, t: Seconds): void {
-    this.#quietSince = t;
-    this.#trace?.({ t, direction: 'received', bytes });
   }
 
   #isWhole(bytes: Uint8Array): boolean {

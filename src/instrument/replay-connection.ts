@@ -1,157 +1,161 @@
-import { constants } from 'node:fs';
-import { open, type FileHandle } from 'node:fs/promises';
 import type { Clock } from '../clock/clock.js';
 import type { ConnectionAddress } from '../files/bench.js';
 import { formatAddress } from '../files/connection-address.js';
 import type { Seconds } from '../quantity/quantity.js';
+import { ConnectionLostError, InstrumentUnreachableError, PortBusyError } from './connection-errors.js';
 import type { Connection } from './connection.js';
-import { readDialogueHeader, readDialogueLine, type TraceEntry } from './dialogue-record.js';
-import { DialogueFileError, ReplayMismatchError } from './replay-errors.js';
+import type { Lost, NotOpened, Opened, Received, TraceEntry } from './dialogue-record.js';
+import { ReplayMismatchError } from './replay-errors.js';
+import { ReplayTape } from './replay-tape.js';
+import { ReplayTime } from './replay-time.js';
 import { visible } from './visible.js';
 
 export type ReplayAddress = Extract<ConnectionAddress, { kind: 'replay' }>;
 
-const largest = 256 * 1024 * 1024;
-/** The clocks of recording and replay agree to rounding, no better. */
-const rounding: Seconds = 1e-9;
-
 /**
- * A recorded dialogue in the place of an instrument: it answers as it did then, and what it is told must be,
- * byte for byte, what was sent then. The file is read as the dialogue goes on. Time passes on the clock as
- * it passed then: a virtual clock makes it a moment.
- * @throws DialogueFileError when there is no such file, or it is too large, or not in the format.
+ * A way to recorded dialogues in the place of instruments: each answers as it did then, and what it is told
+ * must be, byte for byte, what was sent then. Time passes on the clock as it passed then: a virtual clock makes
+ * it a moment. A line that was lost then is lost again, and opened again goes on behind that place.
+ * @throws DialogueFileError when there is no such file, or it is too large, or not in the format
+ * @throws InstrumentUnreachableError, PortBusyError where that happened then, and when the recording holds no
+ * further connection
  */
-export async function openReplay(address: ReplayAddress, clock: Clock): Promise<Connection> {
-  const { file } = address;
-  // Not blocking: else the opening of a pipe waits for somebody to write to it.
-  const handle = await open(file, constants.O_RDONLY | constants.O_NONBLOCK).catch((cause: unknown) => {
-    const missing = (cause as NodeJS.ErrnoException).code === 'ENOENT';
-    throw new DialogueFileError({
-      file,
-      reason: missing ? 'no such file' : 'it cannot be read',
-      missing,
-      cause,
-    });
-  });
-  try {
-    const found = await handle.stat();
-    if (!found.isFile()) throw new DialogueFileError({ file, reason: 'it is no file' });
-    if (found.size > largest) throw new DialogueFileError({ file, reason: `larger than ${largest} bytes` });
-    const lines = handle.readLines()[Symbol.asyncIterator]();
-    const first = await nextLine(lines, file, 1);
-    if (first === undefined || readDialogueHeader(first) === undefined) {
-      throw new DialogueFileError({ file, line: 1, reason: 'not a recorded dialogue' });
+export function replays(clock: Clock): (address: ReplayAddress) => Promise<Connection> {
+  const begun = new Map<string, Recording>();
+  return async (address) => {
+    const known = begun.get(address.file);
+    const recording = known ?? { tape: new ReplayTape(address.file), time: new ReplayTime(clock) };
+    const { tape } = recording;
+    try {
+      await tape.open();
+      begun.set(address.file, recording);
+      await openNext(formatAddress(address), recording, known !== undefined);
+      return new ReplayConnection(formatAddress(address), recording);
+    } catch (error) {
+      await tape.close();
+      throw error;
     }
-    return new ReplayConnection(formatAddress(address), file, handle, lines, clock);
-  } catch (error) {
-    await handle.close().catch(() => undefined);
-    throw error;
-  }
+  };
 }
+
+/** One dialogue from its beginning. @throws as `replays` does */
+export function openReplay(address: ReplayAddress, clock: Clock): Promise<Connection> {
+  return replays(clock)(address);
+}
+
+interface Recording {
+  readonly tape: ReplayTape;
+  readonly time: ReplayTime;
+}
+
+/** A recording that knows nothing of connections is one. */
+async function openNext(address: string, { tape, time }: Recording, again: boolean): Promise<void> {
+  const next = await tape.peek();
+  if (next === 'end' || !isOpening(next)) {
+    if (!again) return;
+    throw new InstrumentUnreachableError({
+      address,
+      reason: 'the recording holds no further connection here',
+      advice: `What comes next in it is line ${tape.line}. ${goesAnotherWay}`,
+    });
+  }
+  time.begin(next.t);
+  tape.pass();
+  if (next.kind === 'unreachable') throw new InstrumentUnreachableError({ address, reason: next.reason });
+  if (next.kind === 'busy') throw new PortBusyError({ address });
+}
+
+function isOpening(entry: TraceEntry): entry is Opened | NotOpened {
+  return entry.kind === 'opened' || entry.kind === 'unreachable' || entry.kind === 'busy';
+}
+
+const goesAnotherWay =
+  'A dialogue replays only with the procedure, the module and the driver it was recorded with.';
 
 class ReplayConnection implements Connection {
   readonly address: string;
-  readonly #file: string;
-  readonly #handle: FileHandle;
-  readonly #lines: AsyncIterator<string, unknown>;
-  readonly #clock: Clock;
-  #lineNumber = 1;
-  /** The recorded time that has been reached. */
-  #reached: Seconds = 0;
-  #next: TraceEntry | 'end' | undefined;
+  readonly #tape: ReplayTape;
+  readonly #time: ReplayTime;
+  #lost: ConnectionLostError | undefined;
   #closed: Promise<void> | undefined;
 
-  constructor(
-    address: string,
-    file: string,
-    handle: FileHandle,
-    lines: AsyncIterator<string, unknown>,
-    clock: Clock,
-  ) {
+  constructor(address: string, { tape, time }: Recording) {
     this.address = address;
-    this.#file = file;
-    this.#handle = handle;
-    this.#lines = lines;
-    this.#clock = clock;
+    this.#tape = tape;
+    this.#time = time;
   }
 
   async write(bytes: Uint8Array): Promise<void> {
     const next = await this.#peek();
-    if (next === 'end' || next.direction === 'received' || !Buffer.from(bytes).equals(next.bytes)) {
-      throw new ReplayMismatchError({
-        file: this.#file,
-        line: this.#lineNumber,
-        expected: next === 'end' ? 'come to its end' : `"${visible(next.bytes)}" ${next.direction}`,
-        found: `"${visible(bytes)}"`,
-      });
+    if (next !== 'end' && next.kind === 'sent' && Buffer.from(bytes).equals(next.bytes)) {
+      this.#time.reach(next.t);
+      this.#tape.pass();
+      return;
     }
-    this.#pass(next);
+    if (next !== 'end' && next.kind === 'lost') throw this.#lose(next);
+    if (this.#lost !== undefined) throw this.#lost;
+    const isEnd = next === 'end';
+    throw new ReplayMismatchError({
+      file: this.#tape.file,
+      line: this.#tape.line,
+      expected: inWords(next),
+      found: `"${visible(bytes)}"`,
+      advice: isEnd ? 'What was recorded ended here, or was cut off.' : goesAnotherWay,
+    });
   }
 
   async receive(within: Seconds): Promise<Uint8Array | undefined> {
     const next = await this.#peek();
-    const isReply = next !== 'end' && next.direction === 'received';
-    // Without waiting: what was found then, between two messages, is found now, however long that took.
-    const inTime = isReply && (within <= 0 || next.t <= this.#reached + within + rounding);
-    if (!inTime) {
-      this.#reached += Math.max(0, within);
-      await this.#clock.sleep(within);
-      return undefined;
+    if (next !== 'end' && next.kind === 'silent') {
+      this.#tape.passSilence(next);
+    } else if (next !== 'end' && isHeard(next) && this.#time.isWithin(next.t, within)) {
+      await this.#time.waitUntil(next.t, within);
+      if (next.kind === 'lost') throw this.#lose(next);
+      this.#tape.pass();
+      return next.bytes;
+    } else if (this.#lost !== undefined) {
+      throw this.#lost;
     }
-    if (within > 0) await this.#clock.sleep(Math.max(0, next.t - this.#reached));
-    this.#pass(next);
-    return next.bytes;
+    await this.#time.wait(within);
+    return undefined;
   }
 
   close(): Promise<void> {
-    this.#closed ??= this.#finish();
+    this.#closed ??= this.#tape.close();
     return this.#closed;
   }
 
-  async #finish(): Promise<void> {
-    this.#next = 'end';
-    await this.#lines.return?.();
-    await this.#handle.close().catch(() => undefined);
+  #peek(): Promise<TraceEntry | 'end'> {
+    if (this.#closed === undefined) return this.#tape.peek();
+    throw new ConnectionLostError({ address: this.address, reason: 'it was closed here' });
   }
 
-  #pass(entry: TraceEntry): void {
-    this.#reached = Math.max(this.#reached, entry.t);
-    this.#next = undefined;
-  }
-
-  async #peek(): Promise<TraceEntry | 'end'> {
-    this.#next ??= await this.#read();
-    return this.#next;
-  }
-
-  async #read(): Promise<TraceEntry | 'end'> {
-    let line: string | undefined;
-    do {
-      this.#lineNumber++;
-      line = await nextLine(this.#lines, this.#file, this.#lineNumber);
-    } while (line?.trim() === '');
-    if (line === undefined) return 'end';
-    const entry = readDialogueLine(line);
-    if (entry === undefined) {
-      throw new DialogueFileError({
-        file: this.#file,
-        line: this.#lineNumber,
-        reason: `"${visible(line)}" is not a line of a recorded dialogue`,
-      });
-    }
-    return entry;
+  #lose({ t, reason }: Lost): ConnectionLostError {
+    this.#time.reach(t);
+    this.#tape.pass();
+    this.#lost = new ConnectionLostError({ address: this.address, reason });
+    return this.#lost;
   }
 }
 
-async function nextLine(
-  lines: AsyncIterator<string, unknown>,
-  file: string,
-  line: number,
-): Promise<string | undefined> {
-  try {
-    const next = await lines.next();
-    return next.done === true ? undefined : next.value;
-  } catch (cause) {
-    throw new DialogueFileError({ file, line, reason: 'it cannot be read', cause });
+function isHeard(entry: TraceEntry): entry is Received | Lost {
+  return entry.kind === 'received' || entry.kind === 'lost';
+}
+
+function inWords(entry: TraceEntry | 'end'): string {
+  if (entry === 'end') return 'come to its end';
+  switch (entry.kind) {
+    case 'sent':
+    case 'received':
+      return `"${visible(entry.bytes)}" ${entry.kind}`;
+    case 'opened':
+      return 'a new connection';
+    case 'unreachable':
+    case 'busy':
+      return 'a connection that could not be opened';
+    case 'lost':
+      return 'the connection lost';
+    case 'silent':
+      return 'nothing received';
   }
 }

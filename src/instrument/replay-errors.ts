@@ -10,12 +10,10 @@ export class ReplayMismatchError extends RailproofError {
   readonly expected: string;
   readonly found: string;
 
-  constructor(facts: { file: string; line: number; expected: string; found: string }) {
+  constructor(facts: { file: string; line: number; expected: string; found: string; advice: string }) {
     super(
       `${facts.file}:${facts.line}: the recording has ${facts.expected}, and now ${facts.found} was sent`,
-      {
-        advice: 'A dialogue replays only with the procedure, the module and the driver it was recorded with.',
-      },
+      { advice: facts.advice },
     );
     this.file = facts.file;
     this.line = facts.line;

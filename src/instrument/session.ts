@@ -2,7 +2,6 @@ import type { Clock } from '../clock/clock.js';
 import type { Driver, DriverReading, Message, Role } from '../files/driver.js';
 import type { Connection } from './connection.js';
 import { Dialogue } from './dialogue.js';
-import type { Trace } from './dialogue-record.js';
 import { readErrorQueue } from './error-queue.js';
 import { isIdentityFor } from './identity.js';
 import { InstrumentComplainedError, NotInDriverError, WrongInstrumentError } from './instrument-errors.js';
@@ -20,7 +19,6 @@ export interface SessionParts {
   readonly clock: Clock;
   /** For the journal: late replies, bytes nobody asked for, errors from before. */
   readonly onNotice?: OnNotice;
-  readonly trace?: Trace;
   /**
    * `make-safe` tells what makes it safe before anything is asked, so that no silence and no complaint comes
    * before it. How it complains is then no reason not to open it.
@@ -51,7 +49,7 @@ export class Session {
    * @throws InstrumentSilentError, ReplyNotUnderstoodError, ConnectionLostError and the rest of the dialogue's
    */
   static async open(parts: SessionParts): Promise<Session> {
-    const { driver, connection, clock, onNotice, trace, first = 'identity' } = parts;
+    const { driver, connection, clock, onNotice, first = 'identity' } = parts;
     const fits = isIdentityFor(driver);
     const isIdentity =
       parts.identity === undefined ? fits : (reply: string): boolean => reply.trim() === parts.identity;
@@ -62,7 +60,6 @@ export class Session {
       identify: driver.identify,
       isIdentity,
       ...(onNotice && { onNotice }),
-      ...(trace && { trace }),
     });
     try {
       if (first === 'make-safe') await tellMakeSafeAfresh(dialogue, driver);

@@ -193,7 +193,7 @@ describe('whatever a text is', () => {
     );
     fc.assert(
       fc.property(fc.double({ noNaN: true, noDefaultInfinity: true }), fc.uint8Array(), (t, bytes) => {
-        const entry = { t: t + 0, direction: 'received', bytes: Buffer.from(bytes) } as const;
+        const entry = { t: t + 0, kind: 'received', bytes: Buffer.from(bytes) } as const;
         expect(readDialogueLine(dialogueLine(entry))).toEqual(entry);
       }),
     );

@@ -32,7 +32,7 @@ it.each([
     69,
   ],
   [
-    new errors.ReplayMismatchError({ file: 'a.jsonl', line: 2, expected: 'x', found: 'y' }),
+    new errors.ReplayMismatchError({ file: 'a.jsonl', line: 2, expected: 'x', found: 'y', advice: 'z' }),
     'REPLAY_MISMATCH',
     69,
   ],

@@ -4,9 +4,13 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import fc from 'fast-check';
 import { describe, expect, it, onTestFinished } from 'vitest';
+import type { Clock } from '../../src/clock/clock.js';
+import { EventClock } from '../../src/clock/event-clock.js';
 import { VirtualClock } from '../../src/clock/virtual-clock.js';
 import { dialogueHeader, dialogueLine } from '../../src/instrument/dialogue-record.js';
 import { Dialogue } from '../../src/instrument/dialogue.js';
+import type { Connection } from '../../src/instrument/connection.js';
+import { tracedConnection } from '../../src/instrument/traced-connection.js';
 import { openReplay } from '../../src/instrument/replay-connection.js';
 import { VirtualLine } from './fixtures/virtual-line.js';
 
@@ -131,8 +135,8 @@ describe('a replayed dialogue', () => {
     const all = Uint8Array.from({ length: 256 }, (_, code) => code);
     const file = await fileOf(
       header +
-        dialogueLine({ t: 0, direction: 'sent', bytes: all }) +
-        dialogueLine({ t: 0, direction: 'received', bytes: all }),
+        dialogueLine({ t: 0, kind: 'sent', bytes: all }) +
+        dialogueLine({ t: 0, kind: 'received', bytes: all }),
     );
     const connection = await replay(file);
     await connection.write(all);
@@ -159,35 +163,30 @@ describe('a replayed dialogue', () => {
         });
         let text = header;
         const wire = { sendEnd: '\n', replyEnd: '\n', gap: 0.01, timeout: 1 };
-        const outcomes = async (dialogue: Dialogue, time: VirtualClock): Promise<readonly string[]> => {
-          const all: string[] = [];
+        const outcomes = async (connection: Connection, clock: Clock): Promise<readonly unknown[]> => {
+          const dialogue = new Dialogue({ connection, wire, clock, identify: '*IDN?' });
+          const all: unknown[] = [];
           for (const [count, { pause }] of timing.entries()) {
-            await time.sleep(pause);
-            all.push(
-              await dialogue
-                .ask(count === 0 ? '*IDN?' : `Q${count}?`)
-                .catch((error: unknown) => String(error)),
-            );
+            await clock.sleep(pause);
+            const outcome = await dialogue
+              .ask(count === 0 ? '*IDN?' : `Q${count}?`)
+              .catch((error: unknown) => String(error));
+            all.push([outcome.replace(/(virtual|replay):\S*/, 'there'), clock.now()]);
           }
-          return all.map((outcome) => outcome.replace(/(virtual|replay):\S*/, 'there'));
+          return all;
         };
-        const trace = (entry: Parameters<typeof dialogueLine>[0]): void => {
+        const time = new EventClock(clock);
+        const traced = tracedConnection(line, time, (entry) => {
           text += dialogueLine(entry);
-        };
-        const then = await outcomes(
-          new Dialogue({ connection: line, wire, clock, identify: '*IDN?', trace }),
-          clock,
-        );
+        });
+        const then = await outcomes(traced, time);
 
         const folder = await mkdtemp(join(tmpdir(), 'railproof-replay-'));
         const file = join(folder, 'dialogue.jsonl');
         await writeFile(file, text);
         const again = new VirtualClock(new Date(0));
         const connection = await replay(file, again);
-        const now = await outcomes(
-          new Dialogue({ connection, wire, clock: again, identify: '*IDN?' }),
-          again,
-        );
+        const now = await outcomes(connection, again);
         await connection.close();
         await rm(folder, { recursive: true });
         expect(now).toEqual(then);

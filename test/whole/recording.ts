@@ -10,8 +10,8 @@ export function recording(connect: Connect, clock: Clock, folder: string): Conne
     const connection = await connect(address, driver, role);
     const file = join(folder, `${role}.jsonl`);
     writeFileSync(file, dialogueHeader(connection.address));
-    const note = (direction: 'sent' | 'received', bytes: Uint8Array): void => {
-      appendFileSync(file, dialogueLine({ t: clock.now(), direction, bytes }));
+    const note = (kind: 'sent' | 'received', bytes: Uint8Array): void => {
+      appendFileSync(file, dialogueLine({ t: clock.now(), kind, bytes }));
     };
     return {
       address: connection.address,
