@@ -1,5 +1,5 @@
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
-import { type Bench, postsOf } from '../files/bench.js';
+import { type Bench, type InstrumentPlace, postsOf } from '../files/bench.js';
 
 /** The bench that a run is to go on with is another one than it was begun on. */
 export class OtherBenchError extends RailproofError {
@@ -36,7 +36,9 @@ function withoutAddresses(bench: Bench): unknown {
   const places = new Set<unknown>(postsOf(bench).map(([, place]) => place));
   return JSON.parse(
     JSON.stringify(bench, (_key, value: unknown) =>
-      places.has(value) ? { driver: (value as { readonly driver: string }).driver } : value,
+      places.has(value)
+        ? { ...(value as InstrumentPlace), connection: undefined, channel: undefined }
+        : value,
     ),
   );
 }

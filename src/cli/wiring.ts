@@ -76,6 +76,7 @@ export function planDrivers(files: DriverFiles): BenchDrivers {
     meter: at('meter'),
     scanner: at('scanner'),
     thermometer: at('thermometer'),
+    source: at('source'),
     ...(places.length === 0 ? {} : { places }),
   };
 }

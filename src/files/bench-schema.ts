@@ -1,11 +1,25 @@
 import { z } from 'zod';
 import { type Bench, placeOf, postsOf, roleOf } from './bench.js';
 import { choice, line, quantity } from './building-blocks.js';
-import { withoutHeader } from './camel-keys.js';
+import { camelKeys, withoutHeader } from './camel-keys.js';
 import { headers } from './file-kind.js';
 import { groupProblems, groupSchema } from './group-schema.js';
 import { instrumentPlace as place } from './instrument-place.js';
 import { simulationSchema } from './simulation-schema.js';
+
+/** Longer than any input capacitor keeps a module latched. */
+const longestOff = 600;
+
+const source = camelKeys(
+  place.extend({
+    voltage: quantity('voltage', 'What the modules are fed with.', { above: 0 }),
+    current: quantity('current', 'The most that the modules may take together.', { above: 0 }),
+    'off-for': quantity('time', 'How long the source is off to clear a latch.', {
+      above: 0,
+      most: longestOff,
+    }).prefault('5 s'),
+  }),
+);
 
 /** A bench file, as an editor sees it and as the program reads it. */
 export const benchSchema: z.ZodType<Bench> = z
@@ -22,6 +36,7 @@ export const benchSchema: z.ZodType<Bench> = z
         thermometer: place
           .describe('A thermometer that touches the module, or the first of several.')
           .exactOptional(),
+        source: source.describe('A dc source that feeds the inputs of dc modules.').exactOptional(),
       })
       .describe('The instruments, by their part in the work.'),
     leads: z

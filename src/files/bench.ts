@@ -1,4 +1,4 @@
-import type { Amperes, Celsius, Kelvins, Ohms, Volts, Watts } from '../quantity/quantity.js';
+import type { Amperes, Celsius, Kelvins, Ohms, Seconds, Volts, Watts } from '../quantity/quantity.js';
 import type { Driver, Role } from './driver.js';
 import type { Simulation } from './simulation-section.js';
 
@@ -10,6 +10,7 @@ export interface Bench {
     readonly meter?: InstrumentPlace;
     readonly scanner?: InstrumentPlace;
     readonly thermometer?: InstrumentPlace;
+    readonly source?: SourcePlace;
   };
   /** There and back; used when nothing senses at the module. 0 ± 0 where the file gives none. */
   readonly leads: { readonly resistance: Ohms; readonly uncertainty: Ohms };
@@ -54,22 +55,24 @@ export interface BenchDrivers {
   readonly meter?: Driver | undefined;
   readonly scanner?: Driver | undefined;
   readonly thermometer?: Driver | undefined;
+  readonly source?: Driver | undefined;
   readonly places?: readonly (Driver | undefined)[] | undefined;
 }
 
 /** The part that an instrument has on a bench: `meter-2` is the own meter of the second place. */
-export type Post = 'load' | 'meter' | 'scanner' | 'thermometer' | `meter-${number}`;
+export type Post = 'load' | 'meter' | 'scanner' | 'thermometer' | 'source' | `meter-${number}`;
 
 /** Every instrument of a bench with its post, the load first. */
 export function postsOf({
   instruments,
   group,
 }: Pick<Bench, 'instruments' | 'group'>): readonly (readonly [Post, InstrumentPlace])[] {
-  const { load, meter, scanner, thermometer } = instruments;
+  const { load, meter, scanner, thermometer, source } = instruments;
   const others = [
     ['meter', meter],
     ['scanner', scanner],
     ['thermometer', thermometer],
+    ['source', source],
     ...(group?.places ?? []).map((place, index) => [`meter-${index + 1}`, place.meter] as const),
   ] as const;
   return [
@@ -81,12 +84,14 @@ export function postsOf({
 }
 
 export function isPost(text: string): text is Post {
-  return /^(?:load|scanner|thermometer|meter(?:-[1-9]\d?)?)$/.test(text);
+  return /^(?:load|scanner|thermometer|source|meter(?:-[1-9]\d?)?)$/.test(text);
 }
 
 /** The role that a driver must have for a post. */
 export function roleOf(post: Post): Role {
-  return post === 'load' || post === 'scanner' || post === 'thermometer' ? post : 'meter';
+  return post === 'load' || post === 'scanner' || post === 'thermometer' || post === 'source'
+    ? post
+    : 'meter';
 }
 
 /** Where a bench file names the instrument at a post. */
@@ -97,8 +102,15 @@ export function placeOf(post: Post): readonly (string | number)[] {
 
 /** The driver at a post; undefined where the bench has none there. */
 export function driverAt(drivers: BenchDrivers, post: Post): Driver | undefined {
-  if (post === 'load' || post === 'meter' || post === 'scanner' || post === 'thermometer')
+  if (
+    post === 'load' ||
+    post === 'meter' ||
+    post === 'scanner' ||
+    post === 'thermometer' ||
+    post === 'source'
+  ) {
     return drivers[post];
+  }
   return drivers.places?.[Number(post.slice('meter-'.length)) - 1];
 }
 
@@ -108,6 +120,15 @@ export interface InstrumentPlace {
   readonly connection: ConnectionAddress;
   /** Of an instrument with several. */
   readonly channel?: number;
+}
+
+/** The dc source that feeds the inputs of the modules. */
+export interface SourcePlace extends InstrumentPlace {
+  /** What the modules are fed with, and the most that they may take. */
+  readonly voltage: Volts;
+  readonly current: Amperes;
+  /** How long it is off to clear a latch. */
+  readonly offFor: Seconds;
 }
 
 export type ConnectionAddress =

@@ -125,6 +125,9 @@ const faultNames = [
   'thermometer-silent',
   'thermometer-lost',
   'thermometer-restarted',
+  'source-silent',
+  'source-lost',
+  'source-restarted',
   'module-dead',
   'reversed',
   'meter-wrong-mode',
@@ -147,6 +150,7 @@ export const simulationSchema: z.ZodType<Simulation> = z
         meter: simulatedInstrument.exactOptional().describe('The meter.'),
         scanner: simulatedInstrument.exactOptional().describe('The scanner.'),
         thermometer: simulatedInstrument.exactOptional().describe('The thermometer.'),
+        source: simulatedInstrument.exactOptional().describe('The source.'),
       })
       .default({})
       .describe('Errors of the instruments; those left out are drawn within the accuracy of the driver.'),

@@ -65,9 +65,9 @@ export interface SimulatedError {
 
 export type FaultName =
   /** It neither answers nor obeys; or its connection drops and can't be opened. */
-  | `${'load' | 'meter' | 'scanner' | 'thermometer'}-${'silent' | 'lost'}`
+  | `${'load' | 'meter' | 'scanner' | 'thermometer' | 'source'}-${'silent' | 'lost'}`
   /** Its power goes and comes again: lost for as long, and it has forgotten all that it was told. */
-  | `${'load' | 'meter' | 'scanner' | 'thermometer'}-restarted`
+  | `${'load' | 'meter' | 'scanner' | 'thermometer' | 'source'}-restarted`
   /** Answers each question for a reading with what it last answered to it, whatever is there. */
   | `${'load' | 'meter'}-stuck`
   | 'module-dead'

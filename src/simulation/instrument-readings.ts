@@ -20,6 +20,7 @@ const USUAL_READING_TIME: Readonly<Record<Dialect['role'], Seconds>> = {
   meter: 0.02,
   scanner: 0,
   thermometer: 0.1,
+  source: 0.02,
 };
 
 /** The leads of a meter, there and back. */
@@ -106,6 +107,12 @@ export class InstrumentReadings {
   temperature(from: Seconds): Celsius {
     const temperature = mean(this.#aperture(from).map((moment) => moment.temperature));
     return shown(temperature, this.#errors.temperature, this.#random);
+  }
+
+  /** At its own output, where a source looks. */
+  ofSource(what: 'voltage' | 'current', from: Seconds): number {
+    const value = mean(this.#aperture(from).map((moment) => this.#bench.sourceOutput(moment)[what]));
+    return shown(value, this.#errors[what], this.#random);
   }
 
   #aperture(from: Seconds): readonly Moment[] {

@@ -47,7 +47,7 @@ export function openSimulation(facts: {
   const { simulation, clock, drivers, group } = facts;
   const random = randomFrom(simulation.seed);
   const began = clock.now();
-  const world = worldOf(simulation, drivers.load, random);
+  const world = worldOf(simulation, drivers, random);
   const probes = new Probes({ simulation, group, scanned: drivers.scanner !== undefined });
   const instruments = new Map<Post, VirtualInstrument>();
   const instrument = (post: string, driver: Driver, dialectName?: string): VirtualInstrument => {
@@ -88,11 +88,11 @@ function cannotBe(post: string, { name, role }: Driver): CannotSimulateError {
   return new CannotSimulateError({
     what: `the driver ${name}, for a ${role}, at the post "${post}"`,
     advice:
-      'There are a load, a meter, a scanner, a thermometer, and own meters of the places: meter-1, meter-2.',
+      'There are a load, a meter, a scanner, a thermometer, a source, and own meters of the places: meter-1, meter-2.',
   });
 }
 
-function worldOf(simulation: Simulation, load: Driver, random: Random): VirtualBench {
+function worldOf(simulation: Simulation, { load, source }: BenchDrivers, random: Random): VirtualBench {
   return new VirtualBench(
     theCircuit(simulation),
     loadHardware(load, simulation.leads, {
@@ -100,13 +100,17 @@ function worldOf(simulation: Simulation, load: Driver, random: Random): VirtualB
       setVoltage: errorOf(simulation, 'load', load, 'set-voltage', random),
     }),
     worldFaults(simulation),
+    source === undefined ? 'hand' : 'source',
   );
 }
 
 function worldFaults({ circuit, faults }: Simulation): readonly WorldFault[] {
   const ofTheWorld = faults.filter(
     (fault): fault is WorldFault =>
-      fault.what === 'module-dead' || fault.what === 'reversed' || fault.what === 'load-restarted',
+      fault.what === 'module-dead' ||
+      fault.what === 'reversed' ||
+      fault.what === 'load-restarted' ||
+      fault.what === 'source-restarted',
   );
   if (circuit !== 'single' && ofTheWorld.some(({ what, of }) => what === 'reversed' && of !== undefined)) {
     throw new CannotSimulateError({

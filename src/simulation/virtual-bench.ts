@@ -8,6 +8,7 @@ import type { SimulatedCircuit } from './resting-point.js';
 import { UnknownModuleError } from './unknown-module-error.js';
 import { advance, onNewLoad, outputOf, powered, unpowered } from './virtual-circuit.js';
 import { type LoadHardware, type LoadState, lawOf, loadAtRest, trips } from './virtual-load.js';
+import { type SourceOutput, sourceAtRest, sourceOutput, type SourceState } from './virtual-source.js';
 
 export type { ModuleMoment, Moment } from './moment.js';
 
@@ -16,10 +17,13 @@ export type StepListener = (before: Moment, after: Moment) => void;
 
 /** What goes wrong with the module or its wires by itself, at a time. */
 export interface WorldFault extends SimulatedFault {
-  readonly what: 'module-dead' | 'reversed' | 'load-restarted';
+  readonly what: 'module-dead' | 'reversed' | 'load-restarted' | 'source-restarted';
 }
 
 export type InputState = 'present' | 'absent' | 'dead';
+
+/** What feeds the modules: a source of the bench, which is off at first, or whatever somebody plugs them into. */
+export type FedBy = 'source' | 'hand';
 
 /**
  * The world: the modules of one circuit, leads and a load. Its time is seconds since it was made. It is folded
@@ -33,12 +37,20 @@ export class VirtualBench {
   #load: LoadState = loadAtRest;
   #law: LoadLaw;
   #state: CircuitState;
+  /** Whether each module is plugged in. */
   readonly #inputs: InputState[];
+  /** Undefined where there is none, and being plugged in is being fed. */
+  #source: SourceState | undefined;
   #reversed = false;
   readonly #faults: WorldFault[];
 
   /** @throws UnknownModuleError for a fault of a module that is not there. */
-  constructor(circuit: SimulatedCircuit, hardware: LoadHardware, faults: readonly WorldFault[] = []) {
+  constructor(
+    circuit: SimulatedCircuit,
+    hardware: LoadHardware,
+    faults: readonly WorldFault[] = [],
+    fedBy: FedBy = 'hand',
+  ) {
     this.#circuit = circuit;
     this.#inputs = circuit.modules.map(() => 'present');
     this.#hardware = hardware;
@@ -47,6 +59,10 @@ export class VirtualBench {
     for (const { of } of faults) if (of !== undefined) this.#placeOf(of);
     // Bonds to earth may short a module from the very beginning.
     this.#state = onNewLoad(circuit, freshCircuit(circuit.modules, 0), this.#law, this.#law);
+    if (fedBy === 'source') {
+      this.#source = sourceAtRest;
+      this.#state = unpowered(circuit, this.#state, this.#law, this.#pluggedIn());
+    }
   }
 
   get circuit(): Simulation['circuit'] {
@@ -73,8 +89,19 @@ export class VirtualBench {
     return this.#load;
   }
 
+  /** As it is at a moment; at rest where there is none. */
+  sourceAt(at: Seconds): SourceState {
+    this.#carryOn(at);
+    return this.#source ?? sourceAtRest;
+  }
+
+  /** What is at the output of the source at that moment. */
+  sourceOutput(moment: Moment): SourceOutput {
+    return sourceOutput(this.#source ?? sourceAtRest, moment);
+  }
+
   /**
-   * A module's input: `dead` is a fault that nobody can undo.
+   * Whether a module is plugged in, be it fed or not: `dead` is a fault that nobody can undo.
    * @throws UnknownModuleError
    */
   inputOf(name: string): InputState {
@@ -103,6 +130,13 @@ export class VirtualBench {
     });
   }
 
+  /** Sets the source; what is plugged into it is fed, or not, at once. */
+  setSource(change: Partial<SourceState>, at: Seconds): void {
+    this.#act(at, () => {
+      this.#takeSource({ ...(this.#source ?? sourceAtRest), ...change });
+    });
+  }
+
   /**
    * Plugs a module in or out, or all of them when none is named.
    * @throws UnknownModuleError
@@ -113,6 +147,7 @@ export class VirtualBench {
     if (changing.length === 0) return;
     this.#act(at, () => {
       for (const place of changing) this.#inputs[place] = input;
+      if (this.#source !== undefined && !feeds(this.#source)) return;
       const carryOn = input === 'present' ? powered : unpowered;
       this.#state = carryOn(this.#circuit, this.#state, this.#law, new Set(changing));
     });
@@ -165,8 +200,23 @@ export class VirtualBench {
           break;
         case 'load-restarted':
           this.#takeLoad(loadAtRest);
+          break;
+        case 'source-restarted':
+          this.#takeSource(sourceAtRest);
       }
     });
+  }
+
+  #takeSource(source: SourceState): void {
+    const before = this.#source ?? sourceAtRest;
+    this.#source = source;
+    if (feeds(before) === feeds(source)) return;
+    const carryOn = feeds(source) ? powered : unpowered;
+    this.#state = carryOn(this.#circuit, this.#state, this.#law, this.#pluggedIn());
+  }
+
+  #pluggedIn(): ReadonlySet<number> {
+    return new Set([...this.modules.keys()].filter((place) => this.#inputs[place] === 'present'));
   }
 
   #takeLoad(load: LoadState): void {
@@ -197,4 +247,8 @@ export class VirtualBench {
       sign: this.#reversed ? -1 : 1,
     });
   }
+}
+
+function feeds({ output, setVoltage }: SourceState): boolean {
+  return output === 'on' && setVoltage > 0;
 }

@@ -12,7 +12,7 @@ import type { VirtualBench } from './virtual-bench.js';
 /** What a relay takes to close or to open. */
 const RELAY_TIME: Seconds = 0.004;
 
-/** The range of a load whose driver gives no ratings. */
+/** The range of a load or of a source whose driver gives no ratings. */
 const USUAL_RANGE = { current: 60, voltage: 150 };
 
 export interface Answer {
@@ -142,6 +142,19 @@ export class VirtualInstrument {
         return dialect.wake({
           identity,
           measure: () => this.#taking('temperature', (at) => this.#readings.temperature(at)),
+        });
+      case 'source':
+        return dialect.wake({
+          identity,
+          most: {
+            current: ratings.current ?? USUAL_RANGE.current,
+            voltage: ratings.voltage ?? USUAL_RANGE.voltage,
+          },
+          state: () => this.#bench.sourceAt(this.#free),
+          set: (change) => {
+            this.#bench.setSource(change, this.#free);
+          },
+          measure: (what) => this.#taking(what, (at) => this.#readings.ofSource(what, at)),
         });
     }
   }

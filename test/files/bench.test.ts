@@ -15,8 +15,9 @@ const at = (port: number): InstrumentPlace => ({
   driver: 'x',
   connection: { kind: 'tcp', host: '127.0.0.1', port },
 });
+const source = { ...at(5), voltage: 24, current: 3, offFor: 5 };
 const bench: Pick<Bench, 'instruments' | 'group'> = {
-  instruments: { load: at(1), thermometer: at(4), scanner: at(3) },
+  instruments: { load: at(1), source, thermometer: at(4), scanner: at(3) },
   group: { measuredBy: 'meters', places: [{}, { meter: at(12) }, { meter: at(13) }] },
 };
 
@@ -25,6 +26,7 @@ it('every instrument of a bench has a post, the load first; a place without a me
     ['load', at(1)],
     ['scanner', at(3)],
     ['thermometer', at(4)],
+    ['source', source],
     ['meter-2', at(12)],
     ['meter-3', at(13)],
   ]);
@@ -39,6 +41,7 @@ it.each<[Post, string, readonly (string | number)[]]>([
   ['meter', 'meter', ['instruments', 'meter']],
   ['scanner', 'scanner', ['instruments', 'scanner']],
   ['thermometer', 'thermometer', ['instruments', 'thermometer']],
+  ['source', 'source', ['instruments', 'source']],
   ['meter-2', 'meter', ['group', 'places', 1, 'meter']],
 ])('the post %s is for a %s, and stands in the file at %j', (post, role, place) => {
   expect(roleOf(post)).toBe(role);
@@ -46,7 +49,7 @@ it.each<[Post, string, readonly (string | number)[]]>([
   expect(isPost(post)).toBe(true);
 });
 
-it.each(['source', 'meter-', 'meter-0', 'meter-x', 'meter-100', 'Load', ''])('"%s" is no post', (text) => {
+it.each(['sources', 'meter-', 'meter-0', 'meter-x', 'meter-100', 'Load', ''])('"%s" is no post', (text) => {
   expect(isPost(text)).toBe(false);
 });
 

@@ -195,7 +195,7 @@ describe('what cannot be simulated', () => {
   });
 
   it.each([
-    ['source', { ...meterDriver, role: 'source' }],
+    ['source', meterDriver],
     ['scanner', meterDriver],
     ['meter-0', meterDriver],
   ] as const)('is refused by name: at the post "%s" something that has no place there', (post, driver) => {

@@ -1,7 +1,9 @@
 import type { Driver, Message, Role } from '../../files/driver.js';
 import { NotUnderstoodBySimulationError, UnknownDialectError } from '../simulation-errors.js';
 import { loadAtRest } from '../virtual-load.js';
+import { sourceAtRest } from '../virtual-source.js';
 import { configuredMeter } from './configured-meter.js';
+import { dcSource } from './dc-source.js';
 import type { Dialect, Interpreter } from './dialect.js';
 import { queryMeter } from './query-meter.js';
 import { queryThermometer } from './query-thermometer.js';
@@ -17,6 +19,7 @@ export const dialects: readonly Dialect[] = [
   queryMeter,
   routedScanner,
   queryThermometer,
+  dcSource,
 ];
 
 /**
@@ -103,5 +106,12 @@ function wakeForTrial(dialect: Dialect): Interpreter {
       return dialect.wake({ ...nothing, closed: () => [], close: () => undefined, open: () => undefined });
     case 'thermometer':
       return dialect.wake(nothing);
+    case 'source':
+      return dialect.wake({
+        ...nothing,
+        most: { current: 1000, voltage: 1000 },
+        state: () => sourceAtRest,
+        set: () => undefined,
+      });
   }
 }

@@ -1,5 +1,6 @@
 import type { Amperes, Celsius, Volts } from '../../quantity/quantity.js';
 import type { LoadState } from '../virtual-load.js';
+import type { SourceState } from '../virtual-source.js';
 
 /** What a way of speaking can do with the instrument it speaks for. */
 export interface LoadHands {
@@ -35,6 +36,14 @@ export interface ThermometerHands {
   measure(): Celsius;
 }
 
+export interface SourceHands {
+  readonly identity: string;
+  readonly most: { readonly voltage: Volts; readonly current: Amperes };
+  state(): SourceState;
+  set(change: Partial<SourceState>): void;
+  measure(what: 'voltage' | 'current'): number;
+}
+
 /** A way of speaking, for one role. It knows the wire's text and nothing of drivers. */
 export type Dialect =
   | {
@@ -60,6 +69,12 @@ export type Dialect =
       readonly role: 'thermometer';
       readonly replyEnd: string;
       wake(hands: ThermometerHands): Interpreter;
+    }
+  | {
+      readonly name: string;
+      readonly role: 'source';
+      readonly replyEnd: string;
+      wake(hands: SourceHands): Interpreter;
     };
 
 export interface Interpreter {
