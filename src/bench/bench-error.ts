@@ -21,8 +21,9 @@ export class PreFlightError extends RailproofError {
   /** What was found, in words. */
   readonly what: string;
 
-  constructor(what: string, advice: string) {
-    super(`before anything was switched on: ${what}`, { advice });
+  /** @param when other than before anything was switched on */
+  constructor(what: string, advice: string, when = 'before anything was switched on') {
+    super(`${when}: ${what}`, { advice });
     this.what = what;
   }
 }
@@ -91,14 +92,52 @@ export class LoadWentOffError extends RailproofError {
   }
 }
 
-/** The load does not do what it was told. */
+/**
+ * The source was on when it was last heard of, and is off now: what the module no longer gives is not the module's
+ * doing, and nobody here feeds it again not knowing why.
+ */
+export class SourceWentOffError extends RailproofError {
+  readonly code = 'SOURCE_WENT_OFF';
+  readonly exitCode = exitCodes.stopped;
+  readonly address: string;
+
+  constructor(address: string) {
+    super(`the output of the source at ${address} was on when it was last heard of, and is off now`, {
+      advice:
+        'it lost its power, protects itself, or someone switched it off at its panel: look there first. Nothing was made of what the module did meanwhile',
+    });
+    this.address = address;
+  }
+}
+
+/** The source gives less than it was told: whatever limit shows then is the source's, and not the module's. */
+export class SourceSagsError extends RailproofError {
+  readonly code = 'SOURCE_SAGS';
+  readonly exitCode = exitCodes.stopped;
+  readonly address: string;
+  readonly gives: Volts;
+  readonly told: Volts;
+
+  constructor(address: string, { gives, told }: { readonly gives: Volts; readonly told: Volts }) {
+    const [given, asked] = [gives, told].map((volts) => formatQuantity(volts, 'voltage', { significant: 3 }));
+    super(`the source at ${address} gives ${String(given)} and was told ${String(asked)}`, {
+      advice:
+        "it has come to its own limit before the module came to its: raise the source's current in the bench file, as far as the leads allow, or ask less of the module. Nothing was made of what the module did meanwhile",
+    });
+    this.address = address;
+    this.gives = gives;
+    this.told = told;
+  }
+}
+
+/** The load, or the source, does not do what it was told. */
 export class DisobeyedError extends RailproofError {
   readonly code = 'DISOBEYED';
   readonly exitCode = exitCodes.instrument;
   readonly address: string;
 
-  constructor(address: string, what: string, advice: string) {
-    super(`the load at ${address} ${what}`, { advice });
+  constructor(address: string, what: string, advice: string, who: 'load' | 'source' = 'load') {
+    super(`the ${who} at ${address} ${what}`, { advice });
     this.address = address;
   }
 }

@@ -11,6 +11,7 @@ import { type InputListener, Load } from './load.js';
 import { checkAgainstLoad } from './meter-against-load.js';
 import { MeterPlaces } from './meter-places.js';
 import type { SampleWanted, Taken } from './sample.js';
+import { Source } from './source.js';
 import { WaysBack } from './ways-back.js';
 
 export interface BenchParts {
@@ -36,6 +37,8 @@ export interface OpenBench {
   readonly load: Load;
   readonly meter: Instrument | undefined;
   readonly thermometer: Instrument | undefined;
+  /** What feeds the modules, where the tool switches it; the one that was opened last. */
+  readonly source: Source | undefined;
   /** Where the meters' probes are. */
   readonly places: MeterPlaces;
   readonly instruments: readonly BenchInstrument[];
@@ -50,6 +53,8 @@ export interface OpenBench {
    * told before anything is asked. Hands over a load that answers.
    */
   reopenLoad(pause: Seconds): Promise<Load>;
+  /** The same for the source, where there is one. */
+  reopenSource(pause: Seconds): Promise<Source>;
   /** How often a connection was lost, or an answer did not come as it should: what is measured across that is no measurement. */
   readonly gaps: number;
   /** What was the matter the last time, in words. */
@@ -114,6 +119,7 @@ function assemble(
   const meter = at('meter');
   const scanner = at('scanner');
   const thermometer = at('thermometer');
+  let source = sourceOf(parts, at('source'));
   const places = new MeterPlaces({
     group: parts.bench.group,
     clock: parts.clock,
@@ -123,8 +129,18 @@ function assemble(
   });
   const instruments = (): readonly BenchInstrument[] => [
     { post: 'load', instrument: load.instrument },
-    ...others,
+    ...others.map(({ post, instrument }) => ({
+      post,
+      instrument: post === 'source' && source !== undefined ? source.instrument : instrument,
+    })),
   ];
+  const reopened = async (post: Post, before: Instrument, pause: Seconds): Promise<Instrument> => {
+    await before.close();
+    await parts.clock.sleep(pause);
+    // Of another one of the same make, found at an address that has changed hands, off would prove nothing.
+    const { identity } = before;
+    return openInstrument(parts, audience, post, { first: 'make-safe', identity });
+  };
   const lookAgain = async (): Promise<readonly Taken[]> => {
     const { gaps } = ways;
     const seen: Taken[] = [];
@@ -142,6 +158,9 @@ function assemble(
     },
     meter,
     thermometer,
+    get source() {
+      return source;
+    },
     places,
     get instruments() {
       return instruments();
@@ -163,13 +182,13 @@ function assemble(
       return taken;
     },
     async reopenLoad(pause) {
-      await load.instrument.close();
-      await parts.clock.sleep(pause);
-      // Of another one of the same make, found at an address that has changed hands, off would prove nothing.
-      const { identity } = load.instrument;
-      const same = await openInstrument(parts, audience, 'load', { first: 'make-safe', identity });
-      load = new Load(same, ceilings, audience.input);
+      load = new Load(await reopened('load', load.instrument, pause), ceilings, audience.input);
       return load;
+    },
+    async reopenSource(pause) {
+      if (source === undefined) throw new Error('the bench has no source');
+      source = new Source(await reopened('source', source.instrument, pause), source.feed, parts.clock);
+      return source;
     },
     get gaps() {
       return ways.gaps;
@@ -193,8 +212,14 @@ function assemble(
   };
 }
 
-async function openInstrument(
-  { bench, drivers, connect, clock }: BenchParts,
+function sourceOf({ bench, clock }: BenchParts, instrument: Instrument | undefined): Source | undefined {
+  const { source: feed } = bench.instruments;
+  return instrument === undefined || feed === undefined ? undefined : new Source(instrument, feed, clock);
+}
+
+/** One instrument, at its post. @throws as `Instrument.open`; the connection is closed then */
+export async function openInstrument(
+  { bench, drivers, connect, clock }: Pick<BenchParts, 'bench' | 'drivers' | 'connect' | 'clock'>,
   { notice }: Audience,
   post: Post,
   { first = 'identity', identity }: { first?: InstrumentParts['first']; identity?: string },

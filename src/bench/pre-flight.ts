@@ -8,13 +8,14 @@ import { moduleVoltage } from './module-voltage.js';
 import type { OpenBench } from './open-bench.js';
 import type { Taken } from './sample.js';
 
-/** @throws PreFlightError when the load's input is on before the run has begun. */
-export async function checkInputIsOff(bench: OpenBench): Promise<void> {
-  if (!(await bench.load.isOn())) return;
-  throw new PreFlightError(
-    `the input of the load at ${bench.load.address} is on`,
-    'is somebody else using it? It is switched off on the way out; begin again when that is clear',
-  );
+/** @throws PreFlightError when the load's input, or the source's output, is on before the run has begun. */
+export async function checkAllIsOff({ load, source }: OpenBench): Promise<void> {
+  const advice =
+    'is somebody else using it? It is switched off on the way out; begin again when that is clear';
+  if (await load.isOn()) throw new PreFlightError(`the input of the load at ${load.address} is on`, advice);
+  if (source !== undefined && (await source.isOn())) {
+    throw new PreFlightError(`the output of the source at ${source.address} is on`, advice);
+  }
 }
 
 /**
@@ -25,6 +26,11 @@ export async function checkMeters({ instruments }: Pick<OpenBench, 'instruments'
   for (const { instrument } of instruments) {
     if (instrument.role === 'meter') await checkMeasuresVoltage(instrument);
   }
+}
+
+/** The module is fed by then, where a source feeds it. */
+export function whenLookedAt({ source }: Pick<OpenBench, 'source'>): string {
+  return `before ${source === undefined ? 'anything' : 'the load'} was switched on`;
 }
 
 /** Below this part of the rated voltage there is nothing there. */
@@ -39,8 +45,10 @@ const nothing = 0.05;
 export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): Promise<Volts> {
   const taken = await bench.sample(() => undefined, { compared: false });
   const volts = moduleVoltage(bench, taken);
+  const wrong = (what: string, advice: string): PreFlightError =>
+    new PreFlightError(what, advice, whenLookedAt(bench));
   if (Number.isNaN(volts)) {
-    throw new PreFlightError(
+    throw wrong(
       'the voltage of the module could not be read',
       `check the range and the leads of the ${bench.description.voltageFrom === 'meter-at-module' ? 'meter' : 'load'}`,
     );
@@ -48,19 +56,13 @@ export async function checkOpenCircuitVoltage(bench: OpenBench, rated: Volts): P
   checkAgreement(bench, taken, rated);
   const read = formatQuantity(volts, 'voltage', { significant: 4 });
   if (volts < -rated * nothing) {
-    throw new PreFlightError(
-      `the module reads ${read}`,
-      'the polarity is reversed: swap the leads at the module',
-    );
+    throw wrong(`the module reads ${read}`, 'the polarity is reversed: swap the leads at the module');
   }
   if (volts < rated * nothing) {
-    throw new PreFlightError(
-      `the module reads ${read}`,
-      'is it plugged in and switched on, are the leads in place?',
-    );
+    throw wrong(`the module reads ${read}`, 'is it plugged in and switched on, are the leads in place?');
   }
   if (Math.abs(volts - rated) > rated * offNameplate) {
-    throw new PreFlightError(
+    throw wrong(
       `the module reads ${read} and its nameplate says ${formatQuantity(rated, 'voltage')}`,
       'is this the right module file? Is the right module connected?',
     );
@@ -87,6 +89,7 @@ function checkAgreement(bench: OpenBench, taken: readonly Taken[], rated: Volts)
     `with the input off the meter reads ${read(metered)} and the load ${read(atLoad)}`,
     "are the meter's probes at the output of what the load is on, the right way round, is it set to dc voltage, " +
       'and are the leads of both in place?',
+    whenLookedAt(bench),
   );
 }
 

@@ -1,4 +1,5 @@
 import { type Ceiling, type Ceilings, ceilingText } from '../bench/ceilings.js';
+import { feedInWords } from '../bench/source.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import { printable } from '../quantity/printable.js';
 import type { Dimension, Seconds } from '../quantity/quantity.js';
@@ -20,6 +21,7 @@ export function planAsText(plan: Plan, done = 0): string {
     ...alignTable(rows, ['right', 'left', 'left', 'left']).map((row) => `  ${row}`),
     `cautions to acknowledge: ${plan.cautions.length === 0 ? 'none' : plan.cautions.join(', ')}`,
     `never above ${ceilingsInWords(plan.ceilings)}`,
+    ...sourceInWords(plan),
     `about ${formatQuantity(Math.ceil(secondsLeft(plan, done)), 'time')} in all; nothing was touched`,
     '',
   ].join('\n');
@@ -32,6 +34,13 @@ function ceilingsInWords({ current, voltage, power, temperature }: Ceilings): st
   return [...always, ...(temperature === undefined ? [] : [said(temperature, 'temperature')])].join(', ');
 }
 
+function sourceInWords({ bench: { instruments } }: Plan): readonly string[] {
+  const { source } = instruments;
+  if (source === undefined) return [];
+  const off = formatQuantity(source.offFor, 'time');
+  return [`fed by the source: ${feedInWords(source)}; off for ${off} to clear a latch`];
+}
+
 /** What is left when the first steps are done. */
 function secondsLeft({ steps }: Plan, done: number): Seconds {
   return steps.slice(done).reduce((sum, { duration }) => sum + duration, 0);
@@ -41,8 +50,9 @@ function underTestInWords({ underTest: { circuit, name } }: Plan): string {
   return circuit === 'single' ? `module ${name}` : `modules ${name} in ${circuit}`;
 }
 
-/** The same for a program; times in seconds, ceilings in A, V, W and °C. */
+/** The same for a program; times in seconds, ceilings and what the source gives in A, V, W and °C. */
 export function planAsJson(plan: Plan, done = 0): object {
+  const { source } = plan.bench.instruments;
   return {
     format: 'railproof/plan 1',
     procedure: plan.procedure.name,
@@ -58,6 +68,9 @@ export function planAsJson(plan: Plan, done = 0): object {
     wiring: plan.procedure.wiring,
     cautions: plan.cautions,
     ceilings: plan.ceilings,
+    ...(source === undefined
+      ? {}
+      : { source: { voltage: source.voltage, current: source.current, offFor: source.offFor } }),
     seconds: secondsLeft(plan, done),
   };
 }

@@ -145,7 +145,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
 
   command(
     'safe',
-    'make a bench safe now: the load off, and read back',
+    'make a bench safe now: the load off, then the source where there is one, and read back',
     'railproof safe --bench fixtures/benches/nursery.yaml',
   )
     .requiredOption('--bench <file>', 'the bench')

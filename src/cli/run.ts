@@ -56,7 +56,7 @@ export async function run(options: RunOptions, streams: Streams): Promise<ExitCo
 
 /** The result first, where there is one; then, whatever happened, whether the load is off, as the last words. */
 function tell(performed: PlanPerformed, json: boolean, streams: Streams): ExitCode {
-  const { understood, ending, safety, folder, status } = performed;
+  const { understood, ending, folder, status } = performed;
   if (understood.kind === 'result') streams.stdout.write(shown(understood.result, json, streams));
   streams.stderr.write(`record: ${printable(folder.path)}\n`);
   if (ending.how !== 'completed') streams.stderr.write(`${errorText(ending.error)}\n`);
@@ -66,16 +66,27 @@ function tell(performed: PlanPerformed, json: boolean, streams: Streams): ExitCo
     streams.stderr.write(`${missing}; the journal holds it all, and \`railproof analyse\` shows it.\n`);
   }
   if (understood.kind === 'result') streams.stderr.write(resumeHint(folder.path, understood.result));
-  if (safety.kind === 'unconfirmed') {
-    const words = `\nIt could not be confirmed that the load is off: ${printable(safety.why)}\n${safety.advice}\n`;
-    streams.stderr.write(fitted(words, streams.stderr.columns));
-  } else {
-    streams.stderr.write('The load is off; it was read back.\n');
-  }
+  tellSafety(performed, streams);
   if (status !== exitCodes.conforms) return status;
   return understood.kind === 'result'
     ? statusOfOutcome(understood.result.outcome)
     : exitCodeOf(understood.error);
+}
+
+/** Last of all what a person must see to, and of that the load. */
+function tellSafety({ safety, sourceSafety }: PlanPerformed, { stderr }: Streams): void {
+  const each = [
+    { what: 'load', safety },
+    ...(sourceSafety === undefined ? [] : [{ what: 'source', safety: sourceSafety }]),
+  ];
+  for (const { what, safety } of each) {
+    if (safety.kind === 'confirmed') stderr.write(`The ${what} is off; it was read back.\n`);
+  }
+  for (const { what, safety } of each.reverse()) {
+    if (safety.kind === 'confirmed') continue;
+    const words = `\nIt could not be confirmed that the ${what} is off: ${printable(safety.why)}\n${safety.advice}\n`;
+    stderr.write(fitted(words, stderr.columns));
+  }
 }
 
 function operatorFor(world: World, yes: boolean, streams: Streams, stop: StopWishes): Operator {

@@ -1,5 +1,10 @@
 import { Connections } from '../bench/connections.js';
-import { loadMayStillBeOn, makeSafeUnopened } from '../bench/make-safe.js';
+import {
+  loadMayStillBeOn,
+  makeSafeUnopened,
+  makeSourceSafeUnopened,
+  type Safety,
+} from '../bench/make-safe.js';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { readBench } from '../files/read-bench.js';
 import { printable } from '../quantity/printable.js';
@@ -9,7 +14,7 @@ import type { Streams } from './streams.js';
 import { planDrivers, readBenchDrivers, worldOf } from './wiring.js';
 
 /**
- * `railproof safe`: the load of a bench off, and read back. Unless that is confirmed the last words are what
+ * `railproof safe`: the load of a bench off, and read back; then its source, where it has one. Unless that is confirmed the last words are what
  * to do by hand, whatever it was that failed. Whoever wants it to end has to wait until the load was told; a
  * second wish ends the wait for an answer, and the load is told again over a new connection.
  */
@@ -23,19 +28,35 @@ export async function safe(wanted: { readonly bench: string }, streams: Streams)
     const connections = new Connections(world.connect);
     stop.hurry.addEventListener('abort', () => void connections.giveUp(), { once: true });
     const { connect } = connections;
-    const { safety, address } = await makeSafeUnopened({ bench: file.value, drivers, connect, clock });
-    if (safety.kind === 'confirmed') {
-      streams.stdout.write(`The load at ${printable(address)} is off; it was read back.\n`);
-      return exitCodes.conforms;
+    const parts = { bench: file.value, drivers, connect, clock };
+    const load = await makeSafeUnopened(parts);
+    tell('load', load, streams);
+    const source = await makeSourceSafeUnopened(parts);
+    if (source !== undefined) tell('source', source, streams);
+    const confirmed = load.safety.kind === 'confirmed' && source?.safety.kind !== 'unconfirmed';
+    // Of both it is the load that must not be missed.
+    if (source !== undefined && load.safety.kind === 'unconfirmed') {
+      streams.stderr.write(`${load.safety.advice}\n`);
     }
-    streams.stderr.write(
-      `It could not be confirmed that the load is off: ${printable(safety.why)}\n${safety.advice}\n`,
-    );
-    return exitCodes.instrument;
+    return confirmed ? exitCodes.conforms : exitCodes.instrument;
   } catch (error) {
     streams.stderr.write(`${errorText(error)}\n${loadMayStillBeOn}\n`);
     return exitCodeOf(error);
   } finally {
     stop.release();
+  }
+}
+
+function tell(
+  what: 'load' | 'source',
+  { safety, address }: { readonly safety: Safety; readonly address: string },
+  { stdout, stderr }: Streams,
+): void {
+  if (safety.kind === 'confirmed') {
+    stdout.write(`The ${what} at ${printable(address)} is off; it was read back.\n`);
+  } else {
+    stderr.write(
+      `It could not be confirmed that the ${what} is off: ${printable(safety.why)}\n${safety.advice}\n`,
+    );
   }
 }

@@ -1,13 +1,15 @@
 import { Guards } from '../bench/guards.js';
-import { makeSafe, type Safety } from '../bench/make-safe.js';
+import { makeSafe, makeSourceSafe, type Safety } from '../bench/make-safe.js';
 import type { OpenBench } from '../bench/open-bench.js';
-import { checkInputIsOff, checkMeters, checkOpenCircuitVoltage } from '../bench/pre-flight.js';
+import { checkAllIsOff, checkMeters, checkOpenCircuitVoltage, whenLookedAt } from '../bench/pre-flight.js';
+import { feedInWords } from '../bench/source.js';
 import { type Trip, tripOf } from '../bench/trip.js';
 import type { Clock } from '../clock/clock.js';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Carried, JournalEvent } from '../record/journal-event.js';
 import type { Operator } from '../steps/operator.js';
+import { startUp } from '../steps/start-up.js';
 import type { Progress, StepContext, Tried } from '../steps/step-kind.js';
 import { cautionTexts } from './cautions.js';
 import type { Plan } from './plan.js';
@@ -43,7 +45,10 @@ export type Ending =
 
 export interface Performed {
   readonly ending: Ending;
+  /** Of the load. */
   readonly safety: Safety;
+  /** Undefined where the bench has none. */
+  readonly sourceSafety: Safety | undefined;
   /** What the run alone says; the decisions come later. */
   readonly status: ExitCode;
 }
@@ -55,6 +60,8 @@ export interface Performed {
 export async function perform(performance: Performance): Promise<Performed> {
   const attempted = await attempt({ ...performance, journal: watched(performance) });
   const safety = await makeSafe(performance.bench);
+  const sourceSafety = await makeSourceSafe(performance.bench);
+  const safeties = { safety, sourceSafety };
   const ending = unlessBroken(attempted, performance.signal);
   const { journal } = performance;
   try {
@@ -64,17 +71,18 @@ export async function perform(performance: Performance): Promise<Performed> {
         text: `it could not be confirmed that the load is off: ${safety.why}`,
       });
     }
+    if (sourceSafety !== undefined) journal.append({ event: 'notice', text: sourceInWords(sourceSafety) });
     journal.append({
       event: 'ended',
       how: ending.how,
       reason: ending.how === 'completed' ? null : ending.reason,
-      status: statusOf(ending, safety),
+      status: statusOf(ending, safeties),
     });
   } catch (error) {
     // A journal that can't be written is reason enough to fail, but not to hide what went wrong before.
-    if (ending.how === 'completed') return performed(endingOf(error), safety);
+    if (ending.how === 'completed') return performed(endingOf(error), safeties);
   }
-  return performed(ending, safety);
+  return performed(ending, safeties);
 }
 
 /** Notices are for the journal and for whoever is there. */
@@ -87,8 +95,16 @@ function watched({ journal, watch }: Performance): Performance['journal'] {
   };
 }
 
-function performed(ending: Ending, safety: Safety): Performed {
-  return { ending, safety, status: statusOf(ending, safety) };
+type Safeties = Pick<Performed, 'safety' | 'sourceSafety'>;
+
+function performed(ending: Ending, safeties: Safeties): Performed {
+  return { ending, ...safeties, status: statusOf(ending, safeties) };
+}
+
+function sourceInWords(safety: Safety): string {
+  return safety.kind === 'confirmed'
+    ? 'the source is off; it was read back'
+    : `it could not be confirmed that the source is off: ${safety.why}`;
 }
 
 async function attempt(performance: Performance): Promise<Ending> {
@@ -121,7 +137,7 @@ function noteTrip({ journal }: Performance, trip: Trip): void {
 }
 
 async function begin({ plan, bench, journal, operator, signal, from }: Performance): Promise<void> {
-  await checkInputIsOff(bench);
+  await checkAllIsOff(bench);
   await checkMeters(bench);
   const wiring = [...plan.procedure.wiring, ...(from?.standing ?? [])];
   if (wiring.length > 0) {
@@ -137,13 +153,29 @@ async function begin({ plan, bench, journal, operator, signal, from }: Performan
     journal.append({ event: 'caution', name: caution, by: acknowledged });
   }
   await bench.load.prepare();
+  await bench.source?.prepare();
+}
+
+/**
+ * The source goes on before the first step that needs a live module, and not before: one that comes earlier may
+ * have it unplugged. Everything was acknowledged by then, and the load is off.
+ */
+async function feed({ bench: { load, source }, journal, clock, signal }: Performance): Promise<void> {
+  if (source === undefined) return;
+  await load.inputOff();
+  signal.throwIfAborted();
+  const text = `the source at ${source.address} feeds what is under test from here on: ${feedInWords(source.feed)}`;
+  journal.append({ event: 'notice', text });
+  await source.on();
+  await clock.sleep(startUp, signal);
+  await source.confirm();
 }
 
 /** The last look before the first step that lets a current flow; a step before it may have unplugged the module. */
 async function lookAtVoltage({ plan, bench, journal }: Performance): Promise<void> {
   const volts = await checkOpenCircuitVoltage(bench, plan.underTest.rated.voltage);
   const read = formatQuantity(volts, 'voltage', { significant: 4 });
-  journal.append({ event: 'notice', text: `before anything was switched on the module read ${read}` });
+  journal.append({ event: 'notice', text: `${whenLookedAt(bench)} the module read ${read}` });
 }
 
 async function goThrough(performance: Performance): Promise<void> {
@@ -163,6 +195,7 @@ async function goThrough(performance: Performance): Promise<void> {
     if (step <= (from?.steps ?? 0)) continue;
     signal.throwIfAborted();
     if (planned.kind.needs.liveModule && !looked) {
+      await feed(performance);
       await lookAtVoltage(performance);
       looked = true;
     }
@@ -181,6 +214,7 @@ async function goThrough(performance: Performance): Promise<void> {
       known,
       tried,
       earths,
+      latches: { cleared: 0 },
       show: (progress) => {
         watch.progress(step, progress);
       },
@@ -202,8 +236,9 @@ function endingOf(thrown: unknown, signal?: AbortSignal): Ending {
   return { how: stopped ? 'stopped' : 'failed', reason: error.message, error };
 }
 
-function statusOf(ending: Ending, safety: Safety): ExitCode {
+function statusOf(ending: Ending, { safety, sourceSafety }: Safeties): ExitCode {
   if (ending.how === 'stopped') return exitCodes.stopped;
   if (ending.how === 'failed') return exitCodeOf(ending.error);
-  return safety.kind === 'confirmed' ? exitCodes.conforms : exitCodes.instrument;
+  const confirmed = safety.kind === 'confirmed' && sourceSafety?.kind !== 'unconfirmed';
+  return confirmed ? exitCodes.conforms : exitCodes.instrument;
 }

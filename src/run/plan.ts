@@ -10,6 +10,7 @@ import type { Known, StepKind } from '../steps/step-kind.js';
 import type { UnderTest } from '../steps/under-test.js';
 import { cautionsFor } from './cautions.js';
 import { circuitProblems, needProblems, underTestOf } from './plan-circuit.js';
+import { sourceProblems } from './plan-source.js';
 
 /** A procedure that fits its module and its bench. */
 export interface Plan {
@@ -54,7 +55,7 @@ const aboveNameplate: Ratio = 0.03;
 /**
  * Checks everything that can be known before an instrument is touched: that the modules are as many as the
  * circuit has places, that the bench can do and read what the steps need, that references are to something measured earlier, that what shall rise does, that currents and powers fit the
- * bench and the load, that the module fits the bench.
+ * bench and the load, that the module fits the bench, and the source the module.
  * @throws PlanError with every problem found.
  */
 export function makePlan(
@@ -71,7 +72,10 @@ export function makePlan(
     ratedVoltage: rated.voltage,
     procedure: resolvedLimits(procedure.limits, known),
   });
-  const problems: string[] = [...circuitProblems(underTest, bench)];
+  const problems: string[] = [
+    ...circuitProblems(underTest, bench),
+    ...sourceProblems(underTest, bench, drivers),
+  ];
   if (rated.voltage > ceilings.voltage.value) {
     problems.push(
       `${underTest.name} is rated ${formatQuantity(rated.voltage, 'voltage')} and ` +

@@ -9,8 +9,9 @@ import { openCircuitVoltage } from './known-voltage.js';
 import { type Pass, passThrough } from './place-passes.js';
 import { Points } from './point.js';
 import { comeBack } from './recover.js';
+import { provePlaces } from './prove-places.js';
+import { startUp } from './start-up.js';
 import { ModuleStaysOffError } from './step-error.js';
-import { provePlaces, startUp } from './prove-places.js';
 import type { Reach, StepContext } from './step-kind.js';
 
 const readingTime: Seconds = 0.1;

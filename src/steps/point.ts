@@ -97,8 +97,8 @@ export class Points {
    * from its set-point on; a plan that remembers what it saw is given as the making of it, so that each take
    * begins with a fresh one.
    * @throws LoadSwitchedOffError when the load's input is off and the module's voltage is there; the point
-   * then ends without an outcome.
-   * @throws UnsteadyLineError
+   * then ends without an outcome. The same when the source does not feed the module as it was told.
+   * @throws UnsteadyLineError, SourceWentOffError, SourceSagsError
    */
   take(plan: PointPlan | (() => PointPlan)): Promise<PointSeen> {
     return uninterrupted(this.#context, () => this.#take(typeof plan === 'function' ? plan() : plan));
@@ -115,7 +115,9 @@ export class Points {
     if (plan.set.voltage !== undefined) await bench.load.setVoltage(plan.set.voltage);
     const { gaps } = bench;
     const isWhole = (): boolean => bench.gaps === gaps;
-    const settling = bench.instruments.map(({ instrument }) => settlingOf(instrument.driver));
+    const settling = bench.instruments.map(({ post, instrument }) =>
+      post === 'source' ? 0 : settlingOf(instrument.driver),
+    );
     await clock.sleep(Math.max(plan.dwell, ...settling), signal);
     const seen = await this.#see(plan, point, isWhole);
     const outcome = seen !== 'interrupted' && isWhole() ? seen.outcome : 'interrupted';
@@ -129,6 +131,7 @@ export class Points {
     if (read === 'interrupted') return read;
     const { last, ...rest } = read;
     const load = await this.#loadAfter(plan.set, last);
+    await this.#context.bench.source?.confirm();
     await this.#context.bench.places.confirm();
     return { ...rest, last: last.t, load };
   }

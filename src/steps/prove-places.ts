@@ -6,6 +6,7 @@ import type { Pass } from './place-passes.js';
 import { elsewhere, reversed, swapped } from './place-errors.js';
 import { type ProofLook, tellPlaces } from './places-told.js';
 import type { Points } from './point.js';
+import { startUp } from './start-up.js';
 import type { StepContext } from './step-kind.js';
 import { tapsOf, type UnderTest } from './under-test.js';
 
@@ -23,8 +24,6 @@ const nothing: Ratio = 0.2;
 const tellable = 4;
 /** How far from its label a module's voltage may be before it is something else that is read. */
 const offLabel: Ratio = 0.25;
-/** What a supply takes to start. */
-export const startUp: Seconds = 2;
 
 /**
  * Shows that what is read at a place comes from the module that is said to stand there, by unplugging one

@@ -1,5 +1,5 @@
 import type { Seconds, Volts } from '../quantity/quantity.js';
-import { askToDo } from './ask-to-do.js';
+import { clearLatch } from './clear-latch.js';
 import type { Points } from './point.js';
 import { ModuleStaysOffError } from './step-error.js';
 import type { StepContext } from './step-kind.js';
@@ -10,7 +10,7 @@ const lookEvery: Seconds = 0.02;
 
 /**
  * Takes the load off after an overload and waits for the voltage to be back. A module that stays off has
- * latched: where someone can act they are asked to cycle its input, and the wait begins again.
+ * latched: where a source feeds it, or someone can act, its input is cycled, and the wait begins again.
  * @throws ModuleStaysOffError when it stays off after that too.
  */
 export async function comeBack(
@@ -19,7 +19,7 @@ export async function comeBack(
   least: Volts,
   patience: Seconds,
 ): Promise<CameBack> {
-  const { bench, journal, operator, clock, step, underTest } = context;
+  const { bench, journal, clock, step } = context;
   const { gaps } = bench;
   const unloaded = clock.now();
   await bench.load.inputOff();
@@ -36,21 +36,7 @@ export async function comeBack(
     return 'came-back';
   }
   journal.append({ event: 'recovery', step, outcome: 'stayed-off', after: patience, within: patience });
-  if (!operator.present) {
-    journal.append({
-      event: 'notice',
-      text: 'the module has latched off and nobody is here to cycle its input',
-    });
-    return 'stayed-off';
-  }
-  await askToDo(context, {
-    name: 'cycle-input',
-    text:
-      underTest.modules.length === 1
-        ? 'The module has switched itself off and stays off. Unplug it, wait until its lamp is out (half a minute), plug it in again.'
-        : 'What is connected has switched itself off and stays off. Unplug all modules, wait until their lamps are out (half a minute), plug them in again.',
-    act: 'cycle input',
-  });
+  if (!(await clearLatch(context))) return 'stayed-off';
   const cycled = await waitForVoltage(points, clock.now(), least, patience);
   const outcome = cycled.back ? 'came-back-after-cycling' : 'stayed-off';
   journal.append({ event: 'recovery', step, outcome, after: cycled.after, within: cycled.within });

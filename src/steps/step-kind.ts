@@ -79,6 +79,8 @@ export interface StepContext {
   readonly tried: Tried;
   /** How each module's output stands to earth, by its name, as a check in this run found it. One that is not there was not checked. */
   readonly earths: Map<string, EarthRelation>;
+  /** How often the source has cycled the modules' input in this step. */
+  readonly latches: { cleared: number };
   readonly show: (progress: Progress) => void;
 }
 

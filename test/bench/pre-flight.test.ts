@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { openBench } from '../../src/bench/open-bench.js';
-import { checkInputIsOff, checkMeters, checkOpenCircuitVoltage } from '../../src/bench/pre-flight.js';
+import { checkAllIsOff, checkMeters, checkOpenCircuitVoltage } from '../../src/bench/pre-flight.js';
 import { nursery, type NurseryChange } from './nursery-bench.js';
 
 async function opened(change: NurseryChange = {}) {
@@ -11,7 +11,7 @@ async function opened(change: NurseryChange = {}) {
 describe('before anything is switched on', () => {
   it('an input that is off and a module with the voltage of its nameplate are fine', async () => {
     const { bench, simulation } = await opened();
-    await checkInputIsOff(bench);
+    await checkAllIsOff(bench);
     await checkOpenCircuitVoltage(bench, 15);
     expect(simulation.world.load.input).toBe('off');
   });
@@ -19,7 +19,7 @@ describe('before anything is switched on', () => {
   it('an input that is on already stops the run: somebody else may be at work', async () => {
     const { bench, simulation, clock } = await opened();
     simulation.world.setLoad({ input: 'on', setCurrent: 1 }, clock.now());
-    await expect(checkInputIsOff(bench)).rejects.toMatchObject({
+    await expect(checkAllIsOff(bench)).rejects.toMatchObject({
       code: 'PRE_FLIGHT',
       exitCode: 3,
       message: 'before anything was switched on: the input of the load at simulated:standard-load is on',

@@ -98,6 +98,7 @@ export async function circuitStep(
       known: { 'rated-current': underTest.rated.current, 'rated-voltage': underTest.rated.voltage },
       tried: {},
       earths: change.earths ?? isolated,
+      latches: { cleared: 0 },
       show: () => undefined,
     })
     .then(

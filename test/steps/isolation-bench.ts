@@ -172,6 +172,7 @@ export async function checkIsolation(script: IsolationScript = {}): Promise<Isol
     known: {},
     tried: {},
     earths,
+    latches: { cleared: 0 },
     show: ({ note }) => {
       if (note !== undefined) notes.push(note);
     },

@@ -94,6 +94,7 @@ export async function stage(change: StageChange = {}): Promise<Stage> {
         known,
         tried,
         earths: new Map(),
+        latches: { cleared: 0 },
         show: (progress) => shown.push(progress),
       });
     },

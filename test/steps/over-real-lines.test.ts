@@ -85,6 +85,7 @@ async function cutInMidRamp(lines: 'tcp' | 'pty') {
     known: { 'rated-voltage': 15, 'rated-current': 4 },
     tried: {},
     earths: new Map(),
+    latches: { cleared: 0 },
     show: () => undefined,
   });
   return { events, world: served.world, load: bench.load.address };

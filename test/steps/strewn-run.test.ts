@@ -102,6 +102,7 @@ async function strewnRamp(mishaps: readonly Mishap[], keeps: boolean) {
       known: { 'rated-voltage': 15, 'rated-current': 4 },
       tried: {},
       earths: new Map(),
+      latches: { cleared: 0 },
       show: () => undefined,
     })
     .then(
