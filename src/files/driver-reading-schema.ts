@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { product, shifted } from '../quantity/decimal-text.js';
 import { QuantityError, readQuantity } from '../quantity/parse-quantity.js';
 import type { Dimension } from '../quantity/quantity.js';
 import { readUnit } from '../quantity/units.js';
@@ -16,7 +17,7 @@ const unit = readFromText<{ readonly dimension: Dimension; readonly factor: numb
   (value) => {
     const known = typeof value === 'string' ? readUnit(value) : undefined;
     if (known !== undefined) {
-      return { dimension: known.dimension, factor: known.factor * 10 ** known.shift };
+      return { dimension: known.dimension, factor: shifted(known.factor, known.shift) };
     }
     const expected = `a unit is needed, one as ${numberUnits.join(', ')}`;
     throw new QuantityError(`${found(value)}; ${expected}`, { found: found(value), expected });
@@ -104,7 +105,7 @@ export const readingSchema = z
   })
   .transform((value): DriverReading => {
     const { ask: asked, unit: given, pattern, 'true-when': trueWhen, 'channel-in': channelIn } = value;
-    const { 'false-when': falseWhen, scale = 1, ranges, averaging } = value;
+    const { 'false-when': falseWhen, scale, ranges, averaging } = value;
     if (channelIn !== undefined) return { kind: 'channel', ask: asked, channelIn };
     if (trueWhen !== undefined)
       return { kind: 'flag', ask: asked, trueWhen, ...(falseWhen === undefined ? {} : { falseWhen }) };
@@ -114,7 +115,8 @@ export const readingSchema = z
       kind: 'number',
       ask: asked,
       dimension: given.dimension,
-      factor: given.factor * scale,
+      factor: product(given.factor, scale ?? 1),
+      ...(scale !== undefined && { scale }),
       ...(pattern !== undefined && { pattern }),
       ...(averaging !== undefined && { averaging }),
       ...(ranges !== undefined && {

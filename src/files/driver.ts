@@ -67,6 +67,8 @@ export interface Message {
   readonly rest?: Seconds;
   /** `ready` is asked until it says so. */
   readonly untilReady?: true;
+  /** It chooses the channel that the messages after it are for. */
+  readonly selectsChannel?: true;
 }
 
 /** What to do with an error, by the text of its entry or the number of its register. */
@@ -123,6 +125,8 @@ export type DriverReading =
       readonly dimension: Dimension;
       /** What the number in the reply is multiplied by to be in the unit of its dimension. */
       readonly factor: number;
+      /** The part of `factor` that is not the unit's: it counts also where the reply names a unit of its own. */
+      readonly scale?: number;
       /** Finds the number in a group named `value`, and its unit, where there is one, in `unit`. */
       readonly pattern?: Expression;
       /** In rising order; the smallest that holds what was read last is chosen before the next reading. */

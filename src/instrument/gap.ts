@@ -4,7 +4,7 @@ import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { ConnectionLostError, InstrumentUnreachableError, PortBusyError } from './connection-errors.js';
 import type { Connection } from './connection.js';
-import { WrongInstrumentError } from './instrument-errors.js';
+import { NotReadyError, WrongInstrumentError } from './instrument-errors.js';
 import {
   InstrumentSilentError,
   OutOfStepError,
@@ -47,7 +47,9 @@ export function isGap(error: unknown): error is RailproofError {
     error instanceof InstrumentSilentError ||
     error instanceof ReplyNotUnderstoodError ||
     error instanceof ReplyTooLongError ||
-    error instanceof OutOfStepError
+    error instanceof OutOfStepError ||
+    // One that answers, and is still busy, is not to be told the same once more.
+    (error instanceof NotReadyError && error.answer === undefined)
   );
 }
 

@@ -33,7 +33,7 @@ interface Gap {
  *
  * With a way back, an act that fails by the line or by a reply is done again, on a new connection if need be;
  * every act does the same when it is done twice. Unless told to look otherwise, an instrument that answers
- * again is first told its settings again: it may have lost its power in between.
+ * again is first prepared and told its settings again: it may have lost its power in between.
  */
 export class Instrument {
   readonly role: Role;
@@ -159,6 +159,7 @@ export class Instrument {
       way.onNotice(gapText(failure, how, this.#clock.now() - began, found));
     };
     if (how === 'open') await this.#reopen(way, within);
+    else await this.#session.prepareAgain();
     const session = this.#session;
     const found = await this.#lookFirst(session, () => this.#tellAgain(session)).catch((error: unknown) => {
       if (!isGap(error)) tell('');

@@ -1,4 +1,4 @@
-import type { Driver } from '../files/driver.js';
+import type { Driver, Message } from '../files/driver.js';
 import type { Dialogue } from './dialogue.js';
 
 /**
@@ -6,16 +6,46 @@ import type { Dialogue } from './dialogue.js';
  * before it is known who is there, and to one that does not answer.
  * @throws ConnectionLostError
  */
-export async function tellMakeSafe(dialogue: Dialogue, driver: Driver): Promise<void> {
-  for (const { text } of driver.operations['make-safe'] ?? []) await dialogue.tell(text);
+export function tellMakeSafe(dialogue: Dialogue, driver: Driver): Promise<void> {
+  return tellUnasked(dialogue, driver.operations['make-safe'] ?? []);
 }
 
 /**
- * The same over a line of which nothing is known. An empty message goes first: whoever spoke before may have
- * died in the middle of one, and what is joined to half of another is neither.
+ * The same over a line of which nothing is known, with what puts the instrument in remote before it.
  * @throws ConnectionLostError
  */
 export async function tellMakeSafeAfresh(dialogue: Dialogue, driver: Driver): Promise<void> {
-  await dialogue.tell('');
+  await tellAfresh(dialogue, driver.remote);
   await tellMakeSafe(dialogue, driver);
+}
+
+/**
+ * Puts an instrument in remote, over a line of which nothing is known: what is told before that it may not
+ * hear, nor answer.
+ * @throws ConnectionLostError
+ */
+export async function tellRemote(dialogue: Dialogue, { remote }: Driver): Promise<void> {
+  if (remote.length > 0) await tellAfresh(dialogue, remote);
+}
+
+/**
+ * Hands an instrument back to its front panel. Nothing is asked after it: many are in remote again when they
+ * are spoken to.
+ * @throws ConnectionLostError
+ */
+export function tellLocal(dialogue: Dialogue, { local }: Driver): Promise<void> {
+  return tellUnasked(dialogue, local);
+}
+
+/**
+ * An empty message goes first: whoever spoke before may have died in the middle of one, and what is joined to
+ * half of another is neither.
+ */
+async function tellAfresh(dialogue: Dialogue, messages: readonly Message[]): Promise<void> {
+  await dialogue.tell('');
+  await tellUnasked(dialogue, messages);
+}
+
+async function tellUnasked(dialogue: Dialogue, messages: readonly Message[]): Promise<void> {
+  for (const { text, rest } of messages) await dialogue.tell(text, rest);
 }

@@ -1,4 +1,5 @@
 import type { ScpiError } from './scpi-error.js';
+import { visible } from './visible.js';
 
 /** What an instrument did that nobody asked for; `shown` is escaped and cut. */
 export type Notice =
@@ -6,7 +7,9 @@ export type Notice =
   | { readonly kind: 'out-of-step'; readonly question: string }
   | { readonly kind: 'late-reply'; readonly shown: string }
   | { readonly kind: 'in-step-again' }
-  | { readonly kind: 'stale-error'; readonly entry: ScpiError };
+  | { readonly kind: 'stale-error'; readonly entry: ScpiError }
+  | { readonly kind: 'harmless-error'; readonly entry: ScpiError }
+  | { readonly kind: 'told-again'; readonly entry: ScpiError };
 
 /** Told in words for people, and as facts for programs. */
 export type OnNotice = (text: string, notice: Notice) => void;
@@ -22,6 +25,14 @@ export function noticeText(address: string, notice: Notice): string {
     case 'in-step-again':
       return `${address} is in step again`;
     case 'stale-error':
-      return `${address} had an error from before: ${notice.entry.number} "${notice.entry.text}"`;
+      return `${address} had an error from before: ${entryText(notice.entry)}`;
+    case 'harmless-error':
+      return `${address} reports ${entryText(notice.entry)}, which its driver calls harmless`;
+    case 'told-again':
+      return `${address} reports ${entryText(notice.entry)}; it is told the same again`;
   }
+}
+
+function entryText({ number, text }: ScpiError): string {
+  return `${number} "${visible(text)}"`;
 }

@@ -1,11 +1,17 @@
 import type { DriverReading } from '../files/driver.js';
 import { longestSearched } from '../files/expression.js';
+import { dimensionWords } from '../quantity/dimension-words.js';
+import { product, shifted } from '../quantity/decimal-text.js';
+import type { DriverPart } from './driver-part.js';
+import { placesOf } from './reply-unit.js';
 import { ReplyNotUnderstoodError } from './reply-errors.js';
 import { parseScpiNumber, type Measurement } from './scpi-number.js';
 
 export interface About {
   readonly address: string;
   readonly question: string;
+  /** What in the driver says how to read it. */
+  readonly part?: DriverPart;
 }
 
 const no = /^(?:.*[^A-Z0-9.])?(?:[+-]?0+|OFF|FALSE|NO)$/i;
@@ -16,25 +22,39 @@ function searchedIn(reply: string): string | undefined {
 }
 
 /**
- * The number in a reply: the whole reply, or what the driver's pattern calls `value`.
- * @throws ReplyNotUnderstoodError
+ * The number in a reply, in the unit of its dimension: the whole reply, or what the driver's pattern calls
+ * `value`. Where the reply names its unit, in what the pattern calls `unit`, that counts and not the driver's.
+ * @throws ReplyNotUnderstoodError; also when the unit could be two, or is none of what is measured
  */
 export function readNumber(
   reply: string,
   reading: Extract<DriverReading, { kind: 'number' }>,
   about: About,
 ): Measurement {
-  if (reading.pattern === undefined) return parseScpiNumber(reply, about);
+  const { pattern, dimension, factor, scale = 1 } = reading;
+  if (pattern === undefined) return times(parseScpiNumber(reply, about), factor);
   const text = searchedIn(reply);
-  const value = text === undefined ? undefined : reading.pattern.group('value', text);
-  if (value === undefined) {
+  const value = text === undefined ? undefined : pattern.group('value', text);
+  if (text === undefined || value === undefined) {
     throw new ReplyNotUnderstoodError({
       ...about,
       reply,
-      expected: `a reply that fits /${reading.pattern.source}/`,
+      expected: `a reply that fits /${pattern.source}/`,
     });
   }
-  return parseScpiNumber(value, about);
+  const measurement = parseScpiNumber(value, about);
+  const unit = pattern.group('unit', text)?.trim() ?? '';
+  if (unit === '') return times(measurement, factor);
+  const places = placesOf(unit, dimension);
+  if (places !== undefined) return times(measurement, shifted(scale, places));
+  const expected = `${dimensionWords[dimension].name} in a unit that can be read in one way only`;
+  throw new ReplyNotUnderstoodError({ ...about, reply, expected });
+}
+
+/** What is no value stays what it is. */
+function times(measurement: Measurement, factor: number): Measurement {
+  if (measurement.kind !== 'value' || factor === 1) return measurement;
+  return { kind: 'value', value: product(measurement.value, factor) };
 }
 
 /**

@@ -1,16 +1,17 @@
 import type { Clock } from '../clock/clock.js';
-import type { Driver, DriverReading, Message, Role } from '../files/driver.js';
+import type { Driver, Message, Role } from '../files/driver.js';
+import type { Seconds } from '../quantity/quantity.js';
 import type { Connection } from './connection.js';
 import { Dialogue } from './dialogue.js';
-import { readErrorQueue } from './error-queue.js';
+import type { DriverPart } from './driver-part.js';
 import { isIdentityFor } from './identity.js';
-import { InstrumentComplainedError, NotInDriverError, WrongInstrumentError } from './instrument-errors.js';
-import { tellMakeSafeAfresh } from './make-safe.js';
+import { NotInDriverError, WrongInstrumentError } from './instrument-errors.js';
+import { tellLocal, tellMakeSafeAfresh, tellRemote } from './make-safe.js';
 import { fillMessage, type OperationValues } from './message.js';
-import { noticeText, type Notice, type OnNotice } from './notice.js';
-import { readChannel, readFlag, readNumber, type About } from './reading.js';
-import type { ScpiError } from './scpi-error.js';
+import type { OnNotice } from './notice.js';
+import { Readings } from './readings.js';
 import type { Measurement } from './scpi-number.js';
+import { clearErrors, type Talk, tellAndCheck } from './tell.js';
 
 export interface SessionParts {
   readonly role: Role;
@@ -26,30 +27,36 @@ export interface SessionParts {
   readonly first?: 'identity' | 'make-safe';
   /** Who must answer, where that is known from before: nobody else will do. */
   readonly identity?: string;
+  /** Aborted when the run must stop: a reading is then no longer waited for until it is due. */
+  readonly signal?: AbortSignal | undefined;
 }
+
+/** After these a meter measures something else, or as it likes; what it was told of its ranges is void. */
+const changesRanges = /^(?:make-safe|measure-.*|.*-mode)$/;
 
 /** What is said to an instrument over one connection, as its driver says it. It takes no turns. */
 export class Session {
   /** What it answered to the question who it is. */
   readonly identity: string;
-  readonly #driver: Driver;
-  readonly #dialogue: Dialogue;
+  readonly #talk: Talk;
+  readonly #readings: Readings;
 
-  private constructor(driver: Driver, identity: string, dialogue: Dialogue) {
+  private constructor(talk: Talk, identity: string) {
     this.identity = identity;
-    this.#driver = driver;
-    this.#dialogue = dialogue;
+    this.#talk = talk;
+    this.#readings = new Readings(talk);
   }
 
   /**
-   * Finds out who is there, empties the error queue of what is in it from before, and sends the driver's
-   * `prepare`. Nothing is switched on. When it fails the connection is closed.
+   * Puts it in remote, finds out who is there, takes from it what errors it has from before, and sends the
+   * driver's `prepare`. Nothing is switched on. When it fails it is handed back and the connection closed.
    * @throws WrongInstrumentError when what answers is not what the driver is for, or not who answered before
    * @throws InstrumentComplainedError when the error queue does not get clear, or `prepare` is refused
+   * @throws NotReadyError
    * @throws InstrumentSilentError, ReplyNotUnderstoodError, ConnectionLostError and the rest of the dialogue's
    */
   static async open(parts: SessionParts): Promise<Session> {
-    const { driver, connection, clock, onNotice, first = 'identity' } = parts;
+    const { driver, connection, clock, onNotice, signal, first = 'identity' } = parts;
     const fits = isIdentityFor(driver);
     const isIdentity =
       parts.identity === undefined ? fits : (reply: string): boolean => reply.trim() === parts.identity;
@@ -62,130 +69,110 @@ export class Session {
       ...(onNotice && { onNotice }),
     });
     try {
-      if (first === 'make-safe') await tellMakeSafeAfresh(dialogue, driver);
+      await (first === 'make-safe' ? tellMakeSafeAfresh : tellRemote)(dialogue, driver);
       const identity = await identityOf(dialogue, parts, isIdentity);
-      const session = new Session(driver, identity, dialogue);
-      const prepared = session.#prepare(onNotice);
+      const session = new Session({ dialogue, driver, clock, onNotice, signal }, identity);
+      const prepared = session.#prepare();
       // Whether it is safe is read from it later, whatever it says of how it was prepared.
       await (first === 'make-safe' ? prepared.catch(() => undefined) : prepared);
       return session;
     } catch (error) {
+      await tellLocal(dialogue, driver).catch(() => undefined);
       await dialogue.close();
       throw error;
     }
   }
 
   get address(): string {
-    return this.#dialogue.address;
+    return this.#talk.dialogue.address;
   }
 
   /**
-   * Sends the messages of an operation, all of them, then reads the error queue where there is one.
-   * @throws InstrumentComplainedError with what the queue holds
+   * Sends the messages of an operation, all of them, then asks about errors where there is a way to.
+   * @throws InstrumentComplainedError with what it reports; NotReadyError
    * @throws NotInDriverError; RangeError when a value that the messages need is missing
    */
   async perform(operation: string, values: OperationValues = {}): Promise<void> {
-    const { operations, name } = this.#driver;
+    const { operations, name } = this.#talk.driver;
     const messages = Object.hasOwn(operations, operation) ? operations[operation] : undefined;
     if (messages === undefined)
       throw new NotInDriverError({ driver: name, what: `operation "${operation}"` });
-    await this.#send(messages.map((message) => ({ ...message, text: fillMessage(message.text, values) })));
+    const filled = messages.map((message) => ({ ...message, text: fillMessage(message.text, values) }));
+    if (changesRanges.test(operation)) this.#readings.forgetRanges();
+    await tellAndCheck(this.#talk, filled, this.#part('operations', operation));
   }
 
   /**
-   * A number, in the unit of its dimension.
+   * A number, in the unit of its dimension; waited for until it is due, where the driver says that it is a mean.
    * @throws ReplyNotUnderstoodError, InstrumentSilentError, NotInDriverError and the rest of the dialogue's
+   * @throws InstrumentComplainedError of a range; NotReadyError
    */
-  async read(reading: string): Promise<Measurement> {
-    return this.#reply(this.#wanted(reading, 'number'), readNumber);
+  read(reading: string): Promise<Measurement> {
+    return this.#readings.number(reading);
   }
 
   /**
    * A yes or no.
    * @throws as `read`; also when the reply says neither
    */
-  async flag(reading: string): Promise<boolean> {
-    return this.#reply(this.#wanted(reading, 'flag'), readFlag);
+  flag(reading: string): Promise<boolean> {
+    return this.#readings.flag(reading);
   }
 
   /**
    * A scanner's closed channel; null where none is.
    * @throws as `read`
    */
-  async channel(reading: string): Promise<number | null> {
-    return this.#reply(this.#wanted(reading, 'channel'), readChannel);
+  channel(reading: string): Promise<number | null> {
+    return this.#readings.channel(reading);
   }
 
-  /** Hands the instrument back to its front panel, as the driver says. */
-  release(): Promise<void> {
-    return this.#send(this.#driver.release);
+  /**
+   * Puts it in remote and prepares it as when it was opened: it may have lost its power since then, and with it
+   * what it was told.
+   * @throws as `open`
+   */
+  async prepareAgain(): Promise<void> {
+    await tellRemote(this.#talk.dialogue, this.#talk.driver);
+    this.#readings.forgetRanges();
+    await this.#prepare();
+  }
+
+  /**
+   * Hands the instrument back to its front panel, as the driver says: the last that it is told, for many are in
+   * remote again once they are asked anything.
+   */
+  async release(): Promise<void> {
+    const { driver, dialogue } = this.#talk;
+    try {
+      await tellAndCheck(this.#talk, driver.release, this.#part('release'));
+    } finally {
+      await tellLocal(dialogue, driver);
+    }
   }
 
   /** Never rejects; a question under way ends with ConnectionLostError. */
   close(): Promise<void> {
-    return this.#dialogue.close();
+    return this.#talk.dialogue.close();
   }
 
-  async #prepare(onNotice: OnNotice | undefined): Promise<void> {
-    const stale = await readErrorQueue(this.#dialogue, this.#driver.errors);
-    for (const entry of stale.entries) {
-      const notice: Notice = { kind: 'stale-error', entry };
-      onNotice?.(noticeText(this.address, notice), notice);
-    }
-    if (!stale.clear) throw this.#complaint(stale.entries, []);
-    await this.#send(this.#driver.prepare);
+  async #prepare(): Promise<void> {
+    await clearErrors(this.#talk);
+    await tellAndCheck(this.#talk, this.#talk.driver.prepare, this.#part('prepare'));
   }
 
-  async #send(messages: readonly Message[]): Promise<void> {
-    for (const { text } of messages) await this.#dialogue.tell(text);
-    if (messages.length === 0) return;
-    const { entries } = await readErrorQueue(this.#dialogue, this.#driver.errors);
-    if (entries.length > 0) {
-      throw this.#complaint(
-        entries,
-        messages.map(({ text }) => text),
-      );
-    }
-  }
-
-  async #reply<Reading extends DriverReading, Result>(
-    reading: Reading,
-    understand: (reply: string, reading: Reading, about: About) => Result,
-  ): Promise<Result> {
-    const question = reading.ask.at(-1)?.text ?? '';
-    for (const { text } of reading.ask.slice(0, -1)) await this.#dialogue.tell(text);
-    const reply = await this.#dialogue.ask(question);
-    try {
-      return understand(reply, reading, { address: this.address, question });
-    } catch (error) {
-      this.#dialogue.doubt();
-      throw error;
-    }
-  }
-
-  #wanted<Kind extends DriverReading['kind']>(
-    name: string,
-    kind: Kind,
-  ): Extract<DriverReading, { kind: Kind }> {
-    const { readings } = this.#driver;
-    const reading = Object.hasOwn(readings, name) ? readings[name] : undefined;
-    if (reading?.kind !== kind) {
-      throw new NotInDriverError({ driver: this.#driver.name, what: `${kind} reading "${name}"` });
-    }
-    return reading as Extract<DriverReading, { kind: Kind }>;
-  }
-
-  #complaint(entries: readonly ScpiError[], after: readonly string[]): InstrumentComplainedError {
-    return new InstrumentComplainedError({ address: this.address, entries, after });
+  #part(section: DriverPart['section'], name?: string): DriverPart {
+    return { driver: this.#talk.driver.name, section, ...(name !== undefined && { name }) };
   }
 }
 
 async function identityOf(
   dialogue: Dialogue,
-  { driver, role, identity: before }: SessionParts,
+  { driver, role, identity: before, first }: SessionParts,
   isIdentity: (reply: string) => boolean,
 ): Promise<string> {
-  let identity = await dialogue.ask(driver.identify);
+  const told = [...driver.remote, ...(first === 'make-safe' ? (driver.operations['make-safe'] ?? []) : [])];
+  let identity = await dialogue.ask(driver.identify, { within: firstAnswerWithin(driver, told) });
   if (!isIdentity(identity)) {
     // It may be the late answer to something that an earlier program asked.
     dialogue.doubt();
@@ -193,4 +180,10 @@ async function identityOf(
   }
   if (isIdentity(identity)) return identity.trim();
   throw new WrongInstrumentError({ address: dialogue.address, role, driver: driver.name, identity, before });
+}
+
+/** Of one that is not ready yet, and is not asked about it before it is known who it is. */
+function firstAnswerWithin({ wire, ready }: Driver, told: readonly Message[]): Seconds {
+  const patience = told.some(({ untilReady }) => untilReady === true) ? ready?.within : undefined;
+  return Math.max(wire.timeout, patience ?? 0);
 }

@@ -27,6 +27,24 @@ export function shifted(value: number, places: number): number {
   return Number(`${mantissa}e${Number(exponent) + places}`);
 }
 
+/**
+ * The product of two numbers as they are written in decimals, correctly rounded: 4.35 times 100 is 435, where
+ * multiplying gives 434.99999999999994. What is not finite is multiplied as ever.
+ */
+export function product(one: number, other: number): number {
+  if (!Number.isFinite(one) || !Number.isFinite(other)) return one * other;
+  const [digits, places] = decimal(one);
+  const [otherDigits, otherPlaces] = decimal(other);
+  return Number(`${digits * otherDigits}e${places + otherPlaces}`);
+}
+
+/** All digits as a whole number, and the power of ten that it is to be multiplied by. */
+function decimal(value: number): readonly [bigint, number] {
+  const [mantissa = '0', exponent = '0'] = exponentialText(value);
+  const [whole = '0', rest = ''] = mantissa.split('.');
+  return [BigInt(whole + rest), Number(exponent) - rest.length];
+}
+
 /** The power of ten of the first digit, after rounding to `significant` digits; 0 for zero. */
 export function decimalExponent(value: number, significant?: number): number {
   return Number(exponentialText(value, significant)[1]);
