@@ -99,8 +99,8 @@ export async function openBench(wanted: BenchParts): Promise<OpenBench> {
     return assemble(parts, audience, connections, ways, load, others);
   } catch (error) {
     const told = await sayWhatIsOn(load, error);
-    for (const { instrument } of others) await instrument.close();
-    await load.close();
+    for (const { instrument } of others) await instrument.leave();
+    await load.leave();
     throw told;
   }
 }

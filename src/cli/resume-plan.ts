@@ -2,6 +2,7 @@ import { createHash } from 'node:crypto';
 import { dirname, join } from 'node:path';
 import { isDeepStrictEqual } from 'node:util';
 import { type Bench, type Post, postsOf, roleOf } from '../files/bench.js';
+import { driversOfChannels } from '../files/bench-channels.js';
 import type { Driver } from '../files/driver.js';
 import { besideBench, parseBench, readBench } from '../files/read-bench.js';
 import { parseDriver } from '../files/read-driver.js';
@@ -53,7 +54,7 @@ export async function loadResumed(wanted: {
   );
   const bench =
     wanted.bench === undefined ? recordedBench : await otherAddresses(wanted.bench, recordedBench.value);
-  const drivers = driversOf(bench.value, texts);
+  const drivers = driversOfChannels(bench, driversOf(bench.value, texts));
   const plan = makePlan(
     procedure.value,
     [first.value, ...others.map(({ value }) => value)],

@@ -6,6 +6,7 @@ import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { realClock } from '../clock/real-clock.js';
 import { VirtualClock } from '../clock/virtual-clock.js';
 import { type Bench, type BenchDrivers, placeOf, type Post, postsOf, roleOf } from '../files/bench.js';
+import { driversOfChannels } from '../files/bench-channels.js';
 import type { Driver } from '../files/driver.js';
 import { readDriver } from '../files/read-driver.js';
 import type { FileRead } from '../files/read-text.js';
@@ -50,7 +51,7 @@ export class WrongRoleError extends RailproofError {
 }
 
 /**
- * The drivers that a bench names, shipped or beside the bench file, each for the role it is given.
+ * The drivers that a bench names, shipped or beside the bench file, each for the role and the channel it is given.
  * @throws BadFileError, MissingFileError, NotShippedError, WrongRoleError
  */
 export async function readBenchDrivers(bench: FileRead<Bench>): Promise<DriverFiles> {
@@ -61,7 +62,7 @@ export async function readBenchDrivers(bench: FileRead<Bench>): Promise<DriverFi
     if (file.value.role !== roleOf(post)) throw new WrongRoleError(bench.path, post, file.value);
     files.push({ post, file });
   }
-  return files;
+  return driversOfChannels(bench, files);
 }
 
 /** What was read of them, without where it stood. */

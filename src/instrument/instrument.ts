@@ -113,9 +113,15 @@ export class Instrument {
     return this.#act((session) => session.channel(reading));
   }
 
-  /** Hands the instrument back to its front panel, as the driver says. */
+  /** The last that it is told: what the driver says is due then, and what gives it its front panel back. */
   release(): Promise<void> {
     return this.#turns.take(() => this.#session.release());
+  }
+
+  /** Leaves it as it is, with its front panel working again. Never rejects. */
+  async leave(): Promise<void> {
+    await this.#turns.take(() => this.#session.handBack()).catch(() => undefined);
+    await this.close();
   }
 
   /** Never rejects; a question under way ends with ConnectionLostError. */

@@ -139,16 +139,23 @@ export class Session {
   }
 
   /**
-   * Hands the instrument back to its front panel, as the driver says: the last that it is told, for many are in
-   * remote again once they are asked anything.
+   * The last that it is told: what the driver says is due then, and whatever came of that, what hands it back.
+   * @throws as `perform`
    */
   async release(): Promise<void> {
-    const { driver, dialogue } = this.#talk;
     try {
-      await tellAndCheck(this.#talk, driver.release, this.#part('release'));
+      await tellAndCheck(this.#talk, this.#talk.driver.release, this.#part('release'));
     } finally {
-      await tellLocal(dialogue, driver);
+      await this.handBack();
     }
+  }
+
+  /**
+   * Gives it its front panel back. Many are in remote again once they are asked anything, so nothing is.
+   * @throws ConnectionLostError
+   */
+  handBack(): Promise<void> {
+    return tellLocal(this.#talk.dialogue, this.#talk.driver);
   }
 
   /** Never rejects; a question under way ends with ConnectionLostError. */
