@@ -2,21 +2,28 @@ import type { Driver, Message, Role } from '../../files/driver.js';
 import { NotUnderstoodBySimulationError, UnknownDialectError } from '../simulation-errors.js';
 import { loadAtRest } from '../virtual-load.js';
 import { sourceAtRest } from '../virtual-source.js';
+import { channelLoad } from './channel-load.js';
 import { configuredMeter } from './configured-meter.js';
 import { dcSource } from './dc-source.js';
 import type { Dialect, Interpreter } from './dialect.js';
+import { functionMeter } from './function-meter.js';
 import { queryMeter } from './query-meter.js';
 import { queryThermometer } from './query-thermometer.js';
+import { remoteLoad } from './remote-load.js';
 import { routedScanner } from './routed-scanner.js';
 import { shortLoad } from './short-load.js';
 import { standardLoad } from './standard-load.js';
 
 /** Every way of speaking there is; to add one is one file and its place here. */
 export const dialects: readonly Dialect[] = [
+  // It understands all that the standard load does, once it is in remote: only who says so first means it.
+  remoteLoad,
   standardLoad,
   shortLoad,
+  channelLoad,
   configuredMeter,
   queryMeter,
+  functionMeter,
   routedScanner,
   queryThermometer,
   dcSource,
@@ -71,6 +78,7 @@ function messagesOf(driver: Driver): readonly DriverMessage[] {
     ...asked([{ text: driver.identify }]),
     ...(driver.errors === 'none' ? [] : asked([{ text: driver.errors.ask }])),
     ...(driver.ready === undefined ? [] : asked([{ text: driver.ready.ask }])),
+    ...(driver.channels?.select ?? []).map(order),
     ...driver.prepare.map(order),
     ...Object.values(driver.operations).flatMap((messages) => messages.map(order)),
     ...Object.values(driver.readings).flatMap(({ ask }) => asked(ask)),

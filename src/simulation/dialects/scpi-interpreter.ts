@@ -9,6 +9,7 @@ export interface ScpiVocabulary {
   readonly identity: string;
   /** What *RST does beside nothing. */
   readonly reset: () => void;
+  /** They come before the common ones, where both have a word. */
   readonly commands: readonly ScpiCommand[];
 }
 
@@ -22,6 +23,7 @@ export class ScpiInterpreter implements Interpreter {
 
   constructor({ identity, reset, commands }: ScpiVocabulary) {
     this.#commands = [
+      ...commands,
       question('*IDN', () => identity),
       question('*OPC', () => '1'),
       question('*TST', () => '0'),
@@ -34,7 +36,6 @@ export class ScpiInterpreter implements Interpreter {
       question('SYSTem:VERSion', () => '1999.0'),
       order('SYSTem:REMote', () => undefined),
       order('SYSTem:LOCal', () => undefined),
-      ...commands,
     ];
   }
 

@@ -1,8 +1,7 @@
 import { loadAtRest } from '../virtual-load.js';
-import type { Dialect, LoadHands } from './dialect.js';
-import { booleanSetting, numberSetting, question, wordSetting } from './scpi-commands.js';
+import type { Dialect } from './dialect.js';
+import { loadCommands } from './load-commands.js';
 import { ScpiInterpreter } from './scpi-interpreter.js';
-import { nr3 } from './scpi-number.js';
 
 /** A load of the standard subsystems: INPut, FUNCtion, CURRent, VOLTage, MEASure. */
 export const standardLoad: Dialect = {
@@ -15,68 +14,6 @@ export const standardLoad: Dialect = {
       reset: () => {
         hands.set(loadAtRest);
       },
-      commands: [
-        booleanSetting(
-          'INPut[:STATe]',
-          () => hands.state().input === 'on',
-          (on) => {
-            hands.set({ input: on ? 'on' : 'off' });
-          },
-        ),
-        wordSetting(
-          '[SOURce:]FUNCtion[:MODE]',
-          new Map([
-            ['CURRent', 'current'],
-            ['VOLTage', 'voltage'],
-          ] as const),
-          () => hands.state().mode,
-          (mode) => {
-            hands.set({ mode });
-          },
-        ),
-        numberSetting(
-          '[SOURce:]CURRent[:LEVel][:IMMediate][:AMPLitude]',
-          { unit: 'A', least: 0, most: hands.most.current },
-          () => hands.state().setCurrent,
-          (setCurrent) => {
-            hands.set({ setCurrent });
-          },
-        ),
-        numberSetting(
-          '[SOURce:]VOLTage[:LEVel][:IMMediate][:AMPLitude]',
-          { unit: 'V', least: 0, most: hands.most.voltage },
-          () => hands.state().setVoltage,
-          (setVoltage) => {
-            hands.set({ setVoltage });
-          },
-        ),
-        protection(hands, 'CURRent', { unit: 'A', least: 0, most: 1.1 * hands.most.current }, 'current'),
-        protection(hands, 'VOLTage', { unit: 'V', least: 0, most: 1.1 * hands.most.voltage }, 'voltage'),
-        protection(
-          hands,
-          'POWer',
-          { unit: 'W', least: 0, most: hands.most.current * hands.most.voltage },
-          'power',
-        ),
-        question('MEASure[:SCALar]:VOLTage[:DC]', () => nr3(hands.measure('voltage')), 2),
-        question('MEASure[:SCALar]:CURRent[:DC]', () => nr3(hands.measure('current')), 2),
-        question('MEASure[:SCALar]:POWer[:DC]', () => nr3(hands.measure('power')), 2),
-      ],
+      commands: loadCommands(hands),
     }),
 };
-
-function protection(
-  hands: LoadHands,
-  node: string,
-  range: Parameters<typeof numberSetting>[1],
-  quantity: 'current' | 'voltage' | 'power',
-): ReturnType<typeof numberSetting> {
-  return numberSetting(
-    `[SOURce:]${node}:PROTection[:LEVel]`,
-    range,
-    () => hands.state().protection[quantity] ?? range.most,
-    (value) => {
-      hands.set({ protection: { ...hands.state().protection, [quantity]: value } });
-    },
-  );
-}

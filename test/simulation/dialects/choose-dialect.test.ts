@@ -1,4 +1,6 @@
+import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
+import { parseDriver } from '../../../src/files/read-driver.js';
 import { dialectFor } from '../../../src/simulation/dialects/choose-dialect.js';
 import {
   NotUnderstoodBySimulationError,
@@ -29,12 +31,29 @@ describe('the dialect for a driver', () => {
     expect(dialectFor(byQuery).name).toBe('query-meter');
   });
 
+  it.each([
+    ['load-input-scpi', 'standard-load'],
+    ['load-source-scpi', 'standard-load'],
+    ['load-remote-scpi', 'remote-load'],
+    ['load-channel-scpi', 'channel-load'],
+    ['load-short-scpi', 'short-load'],
+    ['meter-read-scpi', 'configured-meter'],
+    ['meter-query-scpi', 'query-meter'],
+    ['meter-function-scpi', 'function-meter'],
+    ['scanner-route-scpi', 'routed-scanner'],
+    ['thermometer-query-scpi', 'query-thermometer'],
+    ['source-output-scpi', 'dc-source'],
+  ])('of the shipped family %s is %s', (family, dialect) => {
+    const path = new URL(`../../../drivers/${family}.yaml`, import.meta.url);
+    expect(dialectFor(parseDriver(readFileSync(path, 'utf8'), family)).name).toBe(dialect);
+  });
+
   it('is the one that is named', () => {
     expect(dialectFor(meterDriver, 'query-meter').name).toBe('query-meter');
     const unknown = thrownBy(() => dialectFor(meterDriver, 'standard-load'));
     expect(unknown).toBeInstanceOf(UnknownDialectError);
     expect((unknown as Error).message).toBe(
-      'there is no simulated meter that speaks "standard-load"; there are configured-meter, query-meter',
+      'there is no simulated meter that speaks "standard-load"; there are configured-meter, query-meter, function-meter',
     );
   });
 
