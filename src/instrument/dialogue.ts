@@ -51,7 +51,8 @@ const mostLateReplies = 256;
  * Replies carry no sign of the question they answer, so a late one must be kept from being taken for the
  * next answer. What is on the line before a question is thrown away and told. After a question without an
  * answer the dialogue is out of step: before the next question it asks for the identity, and since
- * instruments answer in order, all that comes before the identity is late. Where the identity was asked for
+ * instruments answer in order, all that comes before the identity is late. So it does where an instrument
+ * that repeats messages, or sends a prompt, did not. Where the identity was asked for
  * more often than it was answered, or is not known yet, one answer proves little: then it must be asked
  * and answered twice, with the line quiet for a whole timeout after each. Telling needs no step, so an
  * instrument can always be told to be safe.
@@ -129,8 +130,8 @@ export class Dialogue {
   }
 
   async #question<Reply>({ message, rest, cut, silence, atMost }: Question<Reply>): Promise<Reply> {
-    const clean = await this.#clearLine();
-    if (!clean || !this.#inStep) await this.#getInStep();
+    const { isWhole, isMissing } = await this.#clearLine();
+    if (!isWhole || isMissing || !this.#inStep) await this.#getInStep();
     // In step again only once this question is answered: whatever is thrown below leaves that open.
     this.#inStep = false;
     await this.#send(message, rest);
@@ -141,6 +142,7 @@ export class Dialogue {
         address: this.address,
         question: message,
         timeout: silence,
+        isUnrepeated: this.#line.isUnrepeated,
         begun: this.#line.begun(),
       });
     }
@@ -148,15 +150,14 @@ export class Dialogue {
     return reply;
   }
 
-  /** The next line that is no late identity: one that is still due is not the answer to another question. */
+  /** The next line. An identity that is still due is passed over: it is not the answer to another question. */
   #answer(reader: ReplyReader, message: string): string | undefined {
-    for (;;) {
-      const line = reader.line();
-      if (line === undefined || message === this.#identify || this.#identitiesDue === 0) return line;
-      if (line.trim() !== this.#identity) return line;
-      this.#identitiesDue--;
-      this.#notice({ kind: 'late-reply', shown: visible(line) });
-    }
+    const line = reader.line();
+    if (line === undefined || message === this.#identify || this.#identitiesDue === 0) return line;
+    if (line.trim() !== this.#identity) return line;
+    this.#identitiesDue--;
+    this.#notice({ kind: 'late-reply', shown: visible(line) });
+    return undefined;
   }
 
   #learn(reply: string): void {
@@ -171,11 +172,15 @@ export class Dialogue {
     await this.#line.send(message, rest);
   }
 
-  /** Whether what was thrown away, if anything, had come to an end. */
-  async #clearLine(): Promise<boolean> {
-    const { size, begins, unfinished } = await this.#line.clear();
+  /**
+   * Whether what was thrown away, if anything, had come to an end, and whether something that was due after a
+   * message before is missing: then nobody can tell how far the instrument is.
+   */
+  async #clearLine(): Promise<{ readonly isWhole: boolean; readonly isMissing: boolean }> {
+    const { size, begins, unfinished, missing } = await this.#line.clear();
     if (size > 0) this.#notice({ kind: 'unasked-bytes', shown: visible(begins), size });
-    return !unfinished;
+    if (missing !== undefined && this.#inStep) this.#notice({ kind: 'missing', what: missing });
+    return { isWhole: !unfinished, isMissing: missing !== undefined };
   }
 
   async #getInStep(): Promise<void> {
@@ -190,7 +195,7 @@ export class Dialogue {
       const heard = await this.#identityRound(giveUp);
       quietRounds = heard === 'then-quiet' ? quietRounds + 1 : 0;
       if (heard === 'nothing') silentRounds += 1;
-      if ((heard === 'all' || quietRounds === 2) && (await this.#clearLine())) {
+      if ((heard === 'all' || quietRounds === 2) && (await this.#clearLine()).isWhole) {
         this.#notice({ kind: 'in-step-again' });
         return;
       }

@@ -3,6 +3,7 @@ import type { Wire } from '../files/driver.js';
 import type { Seconds } from '../quantity/quantity.js';
 import type { Connection } from './connection.js';
 import { ReplyReader } from './reply-reader.js';
+import { type Missing, SideTalk } from './side-talk.js';
 
 export interface Patience {
   /** Counted from here. */
@@ -20,14 +21,16 @@ export interface Unasked {
   readonly begins: Uint8Array;
   /** It stopped in the middle of a reply, or did not stop: more of it may come. */
   readonly unfinished: boolean;
+  /** What was due after a message before, and has not come. */
+  readonly missing?: Missing | undefined;
 }
 
 /** More than this is not waited out. */
 const mostUnasked = 1024 * 1024;
 
 /**
- * Messages out and replies in over one connection, with the ends of line and the gap. It knows nothing of
- * which reply belongs to which message.
+ * Messages out and replies in over one connection, with the ends of line, the pauses, and what an instrument
+ * sends besides its replies. It knows nothing of which reply belongs to which message.
  */
 export class Line {
   readonly address: string;
@@ -35,10 +38,14 @@ export class Line {
   readonly #wire: Wire;
   readonly #clock: Clock;
   readonly #reader: ReplyReader;
+  readonly #sideTalk: SideTalk;
   #quietSince = -Infinity;
   /** The instrument hears nothing before. */
   #deafUntil = -Infinity;
   #sentAt = -Infinity;
+  #missing: Missing | undefined;
+  /** Something was waited for in vain, and nothing has come since: nothing else is waited for before a message. */
+  #isSilent = false;
 
   constructor(connection: Connection, wire: Wire, clock: Clock) {
     this.address = connection.address;
@@ -46,27 +53,35 @@ export class Line {
     this.#wire = wire;
     this.#clock = clock;
     this.#reader = new ReplyReader(connection.address, wire.replyEnd);
+    this.#sideTalk = new SideTalk(wire);
   }
 
   get sentAt(): Seconds {
     return this.#sentAt;
   }
 
+  /** The last message was not repeated, though it should have been. */
+  get isUnrepeated(): boolean {
+    return this.#sideTalk.isUnrepeated;
+  }
+
   /**
-   * Sends a message as soon as the instrument will hear it; after it, it hears nothing for the `rest`.
+   * Sends a message as soon as the instrument will hear it; after it, it hears nothing for the `rest`. What is
+   * due after the last one is waited for, but no longer than a reply.
    * @throws ConnectionLostError
    */
   async send(message: string, rest: Seconds = 0): Promise<void> {
-    const pause = Math.max(this.#quietSince + this.#wire.gap, this.#deafUntil) - this.#clock.now();
-    if (pause > 0) await this.#clock.sleep(pause);
+    await this.#untilItHears();
     const bytes = Buffer.from(message + this.#wire.sendEnd, 'latin1');
     await this.#connection.write(bytes);
     this.#sentAt = this.#quietSince = this.#clock.now();
     this.#deafUntil = this.#sentAt + rest;
+    this.#sideTalk.sent(message);
   }
 
   /**
-   * The next reply as `cut` takes it from the reader, or undefined when it did not come in time.
+   * The next reply as `cut` takes it from the reader, or undefined when it did not come in time. Where `cut`
+   * takes something and gives nothing, it has passed over a reply, and is asked for the next one.
    * @throws ConnectionLostError, and whatever `cut` throws
    */
   async reply<Reply>(
@@ -76,36 +91,80 @@ export class Line {
     const end = since + atMost;
     let deadline = Math.min(since + silence, end);
     for (;;) {
-      const reply = cut(this.#reader);
+      const reply = this.#cut(cut);
       if (reply !== undefined) return reply;
       const left = deadline - this.#clock.now();
       const bytes = left > 0 ? await this.#connection.receive(left) : undefined;
       if (bytes === undefined) return undefined;
-      this.#quietSince = this.#clock.now();
-      this.#reader.push(bytes);
+      this.#received(bytes);
       deadline = Math.min(this.#clock.now() + silence, end);
     }
   }
 
   /** What has come of a reply that is not whole. */
   begun(): Uint8Array {
-    return this.#reader.discard();
+    return this.#sideTalk.begun(this.#reader);
   }
 
-  /** Throws away what is on the line, without waiting for more. */
+  /**
+   * Throws away what is on the line, once the instrument will hear the next message. What is due is waited
+   * for; what is not is told.
+   * @throws ConnectionLostError
+   */
   async clear(): Promise<Unasked> {
-    let last = this.#reader.discard();
-    let begins = last;
-    let size = last.length;
-    while (size <= mostUnasked) {
-      const bytes = await this.#connection.receive(0);
+    await this.#untilItHears();
+    let { size, begins } = this.#sideTalk.overheard();
+    let last: Uint8Array = Buffer.alloc(0);
+    for (;;) {
+      const foreign = this.#sideTalk.discard(this.#reader);
+      if (size === 0) begins = foreign;
+      size += foreign.length;
+      if (foreign.length > 0) last = foreign;
+      const bytes = size > mostUnasked ? undefined : await this.#connection.receive(0);
       if (bytes === undefined) break;
-      this.#quietSince = this.#clock.now();
-      if (size === 0) begins = bytes;
-      size += bytes.length;
-      last = bytes;
+      this.#received(bytes);
     }
-    return { size, begins, unfinished: size > mostUnasked || !this.#isWhole(last) };
+    const missing = this.#missing;
+    this.#missing = undefined;
+    return { size, begins, unfinished: size > mostUnasked || !this.#isWhole(last), missing };
+  }
+
+  #cut<Reply>(cut: (reader: ReplyReader) => Reply | undefined): Reply | undefined {
+    while (this.#sideTalk.replyIsNext(this.#reader)) {
+      const { held } = this.#reader;
+      const reply = cut(this.#reader);
+      if (this.#reader.held === held) return undefined;
+      this.#sideTalk.answered();
+      if (reply !== undefined) return reply;
+    }
+    return undefined;
+  }
+
+  async #untilItHears(): Promise<void> {
+    await this.#untilSettled();
+    const pause = Math.max(this.#quietSince + this.#wire.gap, this.#deafUntil) - this.#clock.now();
+    if (pause > 0) await this.#clock.sleep(pause);
+  }
+
+  /** Waits for what is due after the last message. Where that does not come, it goes on without. */
+  async #untilSettled(): Promise<void> {
+    const end = Math.max(this.#quietSince, this.#deafUntil) + this.#wire.timeout;
+    while (!this.#sideTalk.isSettled(this.#reader)) {
+      const left = this.#isSilent ? 0 : Math.max(0, end - this.#clock.now());
+      const bytes = await this.#connection.receive(left);
+      if (bytes === undefined) {
+        this.#missing ??= this.#sideTalk.giveUp();
+        this.#isSilent = true;
+        return;
+      }
+      this.#received(bytes);
+    }
+  }
+
+  #received(bytes: Uint8Array): void {
+    this.#quietSince = this.#clock.now();
+    this.#isSilent = false;
+    this.#reader.push(bytes);
   }
 
   #isWhole(bytes: Uint8Array): boolean {

@@ -1,4 +1,5 @@
 import type { ScpiError } from './scpi-error.js';
+import type { Missing } from './side-talk.js';
 import { visible } from './visible.js';
 
 /** What an instrument did that nobody asked for; `shown` is escaped and cut. */
@@ -6,6 +7,7 @@ export type Notice =
   | { readonly kind: 'unasked-bytes'; readonly shown: string; readonly size: number }
   | { readonly kind: 'out-of-step'; readonly question: string }
   | { readonly kind: 'late-reply'; readonly shown: string }
+  | { readonly kind: 'missing'; readonly what: Missing }
   | { readonly kind: 'in-step-again' }
   | { readonly kind: 'stale-error'; readonly entry: ScpiError }
   | { readonly kind: 'harmless-error'; readonly entry: ScpiError }
@@ -22,6 +24,8 @@ export function noticeText(address: string, notice: Notice): string {
       return `${address} left "${notice.question}" unanswered; before the next question it must get back in step`;
     case 'late-reply':
       return `${address} sent "${notice.shown}" too late; it is thrown away`;
+    case 'missing':
+      return `${address} did not ${missingWords[notice.what]}, as its driver says it does; before the next question it must get back in step`;
     case 'in-step-again':
       return `${address} is in step again`;
     case 'stale-error':
@@ -32,6 +36,11 @@ export function noticeText(address: string, notice: Notice): string {
       return `${address} reports ${entryText(notice.entry)}; it is told the same again`;
   }
 }
+
+const missingWords: Readonly<Record<Missing, string>> = {
+  echo: 'repeat what it was told',
+  prompt: 'send its prompt',
+};
 
 function entryText({ number, text }: ScpiError): string {
   return `${number} "${visible(text)}"`;

@@ -3,6 +3,22 @@ import type { Seconds } from '../quantity/quantity.js';
 import type { DriverPart } from './driver-part.js';
 import { visible } from './visible.js';
 
+const nothingCame = {
+  did: 'answer',
+  advice:
+    'Is it switched on, is the cable in, is remote control enabled, are the driver and the line settings (baud, ends of line) right?',
+};
+const notFinished = {
+  did: 'finish its answer to',
+  advice:
+    "Compare the driver's reply-end with how this instrument ends a reply; a slow line may need a longer timeout.",
+};
+const notRepeated = {
+  did: 'repeat',
+  advice:
+    'Its driver says that it repeats each message. Has this instrument an echo, and is it switched on? Are the line settings right?',
+};
+
 /** A question was not answered in time. */
 export class InstrumentSilentError extends RailproofError {
   readonly code = 'INSTRUMENT_SILENT';
@@ -13,20 +29,22 @@ export class InstrumentSilentError extends RailproofError {
   /** What had come of a reply that never ended, with control characters escaped; empty when nothing came. */
   readonly begun: string;
 
-  constructor(facts: { address: string; question: string; timeout: Seconds; begun: Uint8Array }) {
+  constructor(facts: {
+    address: string;
+    question: string;
+    timeout: Seconds;
+    begun: Uint8Array;
+    /** It has not repeated the question either, though its driver says that it does. */
+    isUnrepeated?: boolean;
+  }) {
     const begun = visible(facts.begun);
     const within = `within ${Math.round(facts.timeout * 1000)} ms`;
-    super(
-      begun === ''
-        ? `${facts.address} did not answer "${visible(facts.question)}" ${within}`
-        : `${facts.address} did not finish its answer to "${visible(facts.question)}" ${within}: "${begun}"`,
-      {
-        advice:
-          begun === ''
-            ? 'Is it switched on, is the cable in, is remote control enabled, are the driver and the line settings (baud, ends of line) right?'
-            : "Compare the driver's reply-end with how this instrument ends a reply; a slow line may need a longer timeout.",
-      },
-    );
+    const question = `"${visible(facts.question)}"`;
+    const { did, advice } =
+      begun === '' ? nothingCame : facts.isUnrepeated === true ? notRepeated : notFinished;
+    super(`${facts.address} did not ${did} ${question} ${within}${begun === '' ? '' : `: "${begun}"`}`, {
+      advice,
+    });
     this.address = facts.address;
     this.question = facts.question;
     this.timeout = facts.timeout;

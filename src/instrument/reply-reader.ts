@@ -101,6 +101,18 @@ export class ReplyReader {
     return this.#to - this.#from;
   }
 
+  /** What has come that is in no reply yet; only to be looked at, and only now. */
+  get ahead(): Buffer {
+    return this.#buffer.subarray(this.#from, this.#to);
+  }
+
+  /** Passes over bytes that are no part of a reply; a line feed goes with the carriage return before it. */
+  pass(count: number): void {
+    const last = this.#buffer[this.#from + count - 1];
+    this.#passTo(this.#from + count);
+    if (last === carriageReturn[0]) this.#mayFollow([lineFeed]);
+  }
+
   /** Throws away what has come, and gives it to whoever wants to say so. */
   discard(): Uint8Array {
     const held = new Uint8Array(this.#buffer.subarray(this.#from, this.#to));
