@@ -16,7 +16,7 @@ export interface Ceilings {
 
 export interface Ceiling {
   readonly value: number;
-  /** In words, for messages: `the bench`, `the load's rating`, `the procedure`, `the nameplate`. */
+  /** In words, for messages: `the bench`, `the load's rating`, `the source`, `the procedure`, `the nameplate`. */
   readonly setBy: string;
 }
 
@@ -54,7 +54,8 @@ const ofRatedCurrent = 0.95;
 /**
  * The strictest of the bench's limits, the ratings of the instruments that carry the quantity (the load's
  * rated current counts less 5 %), the procedure's limits, and for the voltage the nameplate and a quarter
- * more. Of two that say the same the bench is named, then the instrument.
+ * more; for the power also what the source gives, as no module gives what it does not get. Of two that say the
+ * same the bench is named, then the instrument.
  */
 export function ceilingsOf(
   bench: Bench,
@@ -80,6 +81,7 @@ export function ceilingsOf(
     power: strictest(
       { value: limits.power, setBy: 'the bench' },
       by("the load's rating", load.ratings.power),
+      by('the source', given(bench)),
       by('the procedure', procedure.power),
     ),
     temperature: coolest(by('the bench', limits.temperature), by('the procedure', procedure.temperature)),
@@ -93,6 +95,10 @@ export function ceilingText({ value }: Ceiling, dimension: Dimension): string {
 
 function by(setBy: string, value: number | undefined): Ceiling | undefined {
   return value === undefined ? undefined : { value, setBy };
+}
+
+function given({ instruments: { source } }: Bench): Watts | undefined {
+  return source && source.voltage * source.current;
 }
 
 /** To the milliampere, as nobody reads more in a message. */

@@ -5,7 +5,7 @@ import type { UnderTest } from '../steps/under-test.js';
 
 /** Whether the bench's source, where it has one, can feed what is under test, and may. */
 export function* sourceProblems(
-  { circuit, modules, name, rated }: UnderTest,
+  { circuit, modules }: UnderTest,
   { instruments: { source: feed } }: Bench,
   { source: driver }: BenchDrivers,
 ): Generator<string> {
@@ -30,10 +30,6 @@ export function* sourceProblems(
   const said = formatQuantity(watts, 'power', { significant: 4 });
   if (power !== undefined && watts > power) {
     yield `${where}: ${feedInWords(feed)}, is ${said}, more than ${driver.name} is rated for (${formatQuantity(power, 'power')})`;
-  }
-  const label = rated.voltage * rated.current;
-  if (watts <= label) {
-    yield `${where}: ${feedInWords(feed)}, is ${said}, and ${name} is to give ${formatQuantity(label, 'power', { significant: 4 })} by its label; no module gives what it does not get`;
   }
   for (const operation of ['set-voltage', 'set-current']) {
     if (!Object.hasOwn(driver.operations, operation))

@@ -37,6 +37,11 @@ describe('what may never be exceeded on a bench', () => {
     expect(ceilingsOf(description, drivers).voltage).toEqual({ value: 42, setBy: "the scanner's rating" });
   });
 
+  it('is never more than the source gives, as no module gives what it does not get', async () => {
+    const { description, drivers } = await nursery({ file: 'nursery-source' });
+    expect(ceilingsOf(description, drivers).power).toEqual({ value: 96, setBy: 'the source' });
+  });
+
   it("is the bench's limit where the drivers promise nothing", async () => {
     const { description, drivers } = await nursery({ load: { ratings: {} }, meter: { ratings: {} } });
     expect(ceilingsOf(description, drivers)).toMatchObject({

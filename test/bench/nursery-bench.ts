@@ -25,6 +25,7 @@ export interface NurseryChange {
   readonly bench?: Partial<Bench>;
   readonly load?: Partial<Driver>;
   readonly meter?: Partial<Driver>;
+  readonly source?: Partial<Driver>;
   /** What the meter answers to READ? whatever is at its probes; it is told which reading it is, from 1. */
   readonly meterReads?: string | ((count: number) => string);
   /** The same, of the thermometer. */
@@ -37,7 +38,12 @@ export interface NurseryChange {
 
 export interface Nursery {
   readonly description: Bench;
-  readonly drivers: { readonly load: Driver; readonly meter: Driver; readonly thermometer?: Driver };
+  readonly drivers: {
+    readonly load: Driver;
+    readonly meter: Driver;
+    readonly thermometer?: Driver;
+    readonly source?: Driver;
+  };
   readonly clock: VirtualClock;
   readonly simulation: OpenedSimulation;
   /** Every line to an instrument that was opened, oldest first. */
@@ -57,15 +63,18 @@ export async function nursery(change: NurseryChange = {}): Promise<Nursery> {
   // What stands there speaks as the shipped drivers say; a changed driver is how we speak to it.
   const thermometer =
     instruments.thermometer && (await readDriver(instruments.thermometer.driver, shelves)).value;
+  const source = instruments.source && (await readDriver(instruments.source.driver, shelves)).value;
   const there = {
     load: shippedLoad.value,
     meter: shippedMeter.value,
     ...(thermometer === undefined ? {} : { thermometer }),
+    ...(source === undefined ? {} : { source }),
   };
   const drivers = {
     ...there,
     load: { ...there.load, ...change.load },
     meter: { ...there.meter, ...change.meter },
+    ...(source === undefined ? {} : { source: { ...source, ...change.source } }),
   };
   const clock = new VirtualClock(new Date('2026-11-20T09:00:00Z'));
   const opened = openSimulation({ simulation, clock, drivers: there });

@@ -5,6 +5,7 @@ import { afterAll } from 'vitest';
 import { simulatedOperator } from '../../src/cli/simulated-operator.js';
 import { vocabulary } from '../../src/cli/wiring.js';
 import type { InputState } from '../../src/bench/load.js';
+import type { Module } from '../../src/files/module.js';
 import { parseProcedure } from '../../src/files/read-procedure.js';
 import { journalFormat, type JournalEvent, type TimedEvent } from '../../src/record/journal-event.js';
 import { checkJournal, type Integrity, readJournal } from '../../src/record/journal-reader.js';
@@ -44,6 +45,8 @@ export interface RehearsalChange extends NurseryChange {
   readonly signal?: AbortSignal;
   /** Told of each event before it is journalled; what it throws is as if the journal had failed. */
   readonly onEvent?: (event: JournalEvent, bench: Nursery) => void;
+  /** Its module file; K1's when left out. */
+  readonly label?: Module;
   readonly rated?: { readonly voltage: number; readonly current: number };
 }
 
@@ -90,7 +93,8 @@ export async function rehearse(change: RehearsalChange): Promise<Rehearsal> {
     const { input } = place.simulation.world.load;
     if (input !== (inputs.at(-1) ?? 'off')) inputs.push(input);
   });
-  const module = { ...k1, rated: change.rated ?? k1.rated };
+  const label = change.label ?? k1;
+  const module = { ...label, rated: change.rated ?? label.rated };
   const plan = makePlan(
     procedureOf(change.steps, change.cautions, change.wiring, change.asksFor),
     [module],

@@ -17,6 +17,15 @@ export const k1: Module = {
   changes: [],
 };
 
+export const k7: Module = {
+  ...k1,
+  name: 'K7',
+  description: '24 V to 15 V converter from a retired irrigation controller',
+  rated: { voltage: 15, current: 2.5 },
+  protectionClass: 'II',
+  input: 'dc',
+};
+
 /** Nobody is at the bench. */
 export const nobody: Operator = {
   present: false,
@@ -66,6 +75,11 @@ export async function stage(change: StageChange = {}): Promise<Stage> {
   });
   const bench = await place.open();
   await bench.load.prepare();
+  if (bench.source !== undefined) {
+    await bench.source.prepare();
+    await bench.source.on();
+    await place.clock.sleep(2);
+  }
   const known: Known = { 'rated-voltage': 15, 'rated-current': 4, ...change.known };
   const limits: GuardLimits = { ...bench.ceilings, ratedVoltage: 15 };
   const tried: Tried = {};
