@@ -1,22 +1,24 @@
 import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
-import { readAnyFile } from '../files/read-any-file.js';
+import { type AnyFile, readAnyFile } from '../files/read-any-file.js';
+import type { FileRead } from '../files/read-text.js';
 import { printable } from '../quantity/printable.js';
-import type { Streams } from './streams.js';
+import { checkDialogueOf } from './check-dialogue.js';
 import { errorText } from './error-text.js';
+import type { Streams } from './streams.js';
 import { readBenchDrivers, vocabulary } from './wiring.js';
 
 /**
  * `railproof check`: looks at each file and says what is wrong with it, or that it is right. A bench is
- * checked together with its drivers. The exit status is that of the first bad one.
+ * checked together with its drivers, and a driver together with its dialogue. The exit status is that of the
+ * first bad one.
  */
 export async function check(files: readonly string[], streams: Streams): Promise<ExitCode> {
   let status: ExitCode = exitCodes.conforms;
   for (const path of files) {
     try {
       const file = await readAnyFile(path, vocabulary);
-      const { kind, content } = file.value;
-      if (kind === 'bench') await readBenchDrivers({ ...file, value: content });
-      streams.stdout.write(`${printable(path)}: a ${kind} file, and right\n`);
+      const also = await checkTogether(file);
+      streams.stdout.write(`${printable(path)}: a ${file.value.kind} file, and right${also}\n`);
     } catch (error) {
       if (!(error instanceof RailproofError)) throw error;
       streams.stderr.write(`${errorText(error)}\n`);
@@ -24,4 +26,24 @@ export async function check(files: readonly string[], streams: Streams): Promise
     }
   }
   return status;
+}
+
+/** What a file is checked together with, and a few words about it. */
+async function checkTogether(file: FileRead<AnyFile>): Promise<string> {
+  const { kind, content } = file.value;
+  if (kind === 'driver') {
+    const exchanges = checkDialogueOf({ ...file, value: content });
+    return exchanges === 0 ? '' : `; ${counted(exchanges)} of its dialogue too`;
+  }
+  if (kind === 'bench') {
+    const drivers = await readBenchDrivers({ ...file, value: content });
+    for (const driver of new Map(drivers.map(({ file: each }) => [each.path, each])).values()) {
+      checkDialogueOf(driver);
+    }
+  }
+  return '';
+}
+
+function counted(exchanges: number): string {
+  return exchanges === 1 ? 'the one exchange' : `all ${exchanges} exchanges`;
 }
