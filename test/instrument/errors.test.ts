@@ -27,6 +27,14 @@ it.each([
     69,
   ],
   [
+    new errors.NotReadyError({
+      ...{ address, told: 'INIT', question: '*OPC?', answer: '0\n', within: 10 },
+      part: { driver: 'toy', section: 'operations', name: 'input-on' },
+    }),
+    'NOT_READY',
+    69,
+  ],
+  [
     new errors.WrongInstrumentError({ address, role: 'load', driver: 'toy', identity: '\x00' }),
     'WRONG_INSTRUMENT',
     69,

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { VirtualClock } from '../../src/clock/virtual-clock.js';
 import type { Driver } from '../../src/files/driver.js';
+import { expression } from '../../src/files/expression.js';
 import { ConnectionLostError, InstrumentUnreachableError } from '../../src/instrument/connection-errors.js';
 import type { Connection } from '../../src/instrument/connection.js';
 import { Instrument } from '../../src/instrument/instrument.js';
@@ -280,6 +281,74 @@ describe('an instrument that answers late', () => {
     const began = clock.now();
     await expect(instrument.read('voltage')).rejects.toMatchObject({ code: 'INSTRUMENT_SILENT' });
     expect(clock.now() - began).toBeLessThan(10);
+    expect(lines.length).toBeGreaterThan(2);
+  });
+
+  it('is put in remote, prepared and told its settings again: it may have been off in between', async () => {
+    const toy = toyLoad();
+    let silent = false;
+    const { instrument, cut } = await reached(
+      () => ({
+        react: (message, at) => {
+          const isRemote = message === 'SYST:REM';
+          if (isRemote) toy.told.push(message);
+          const quiet = isRemote || (silent && message === 'MEAS:VOLT?');
+          if (silent && message === 'MEAS:VOLT?') silent = false;
+          return quiet ? [] : toy.react(message, at);
+        },
+      }),
+      { driver: { remote: [{ text: 'SYST:REM' }] } },
+    );
+    cut();
+    await instrument.perform('current-mode');
+    await instrument.perform('set-current', { amps: 2 });
+    silent = true;
+    toy.told.length = 0;
+    expect(await instrument.read('voltage')).toEqual({ kind: 'value', value: 15.1 });
+    expect(toy.told.filter((message) => !/^(SYST:ERR|\*IDN)\?$/.test(message))).toEqual([
+      ...['', 'SYST:REM', '*CLS', 'FUNC CURR', 'CURR 2', 'MEAS:VOLT?'],
+    ]);
+  });
+});
+
+describe('an instrument that does not get ready', () => {
+  const ready = {
+    ask: '*OPC?',
+    when: { kind: 'answer', like: expression('^1$') },
+    every: 0.1,
+    within: 3,
+  } as const;
+  const operations = { 'set-current': [{ text: 'CURR {amps}', untilReady: true }] } as const;
+
+  it('and says so is not told the same again', async () => {
+    const toy = toyLoad({ replies: { '*OPC?': '0' } });
+    const { instrument, clock, lines, cut } = await reached(() => ({ react: toy.react }), {
+      driver: { ready, operations },
+    });
+    cut();
+    await instrument.flag('input-state');
+    const began = clock.now();
+    await expect(instrument.perform('set-current', { amps: 2 })).rejects.toMatchObject({
+      code: 'NOT_READY',
+      answer: '0',
+    });
+    expect(clock.now() - began).toBeLessThan(3.1);
+    expect(lines).toHaveLength(2);
+  });
+
+  it('and says nothing is sought as any that is silent, and not for ever', async () => {
+    const toy = toyLoad({ replies: { '*OPC?': undefined } });
+    const { instrument, clock, lines, cut } = await reached(() => ({ react: toy.react }), {
+      driver: { ready, operations },
+    });
+    cut();
+    await instrument.flag('input-state');
+    const began = clock.now();
+    await expect(instrument.perform('set-current', { amps: 2 })).rejects.toMatchObject({
+      code: 'NOT_READY',
+      answer: undefined,
+    });
+    expect(clock.now() - began).toBeLessThan(20);
     expect(lines.length).toBeGreaterThan(2);
   });
 });

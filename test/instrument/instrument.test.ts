@@ -130,6 +130,83 @@ describe('opening an instrument', () => {
   });
 });
 
+describe('an instrument that must be put in remote', () => {
+  const driver: Partial<Driver> = {
+    remote: [{ text: 'SYST:REM' }],
+    local: [{ text: 'SYST:LOC' }],
+    errors: 'none',
+  };
+
+  it('is told so before anything else, and over a line on which somebody may have died in mid-message', async () => {
+    const { load } = await opened({ driver });
+    expect(load.told).toEqual(['', 'SYST:REM', '*IDN?', '*CLS']);
+  });
+
+  it('is told so even before what makes it safe, which it would not heed', async () => {
+    const { load } = await opened({ driver, first: 'make-safe' });
+    expect(load.told).toEqual(['', 'SYST:REM', 'INP OFF', '*IDN?', '*CLS']);
+  });
+
+  it('is handed back last of all, with nothing asked after that', async () => {
+    const { instrument, load } = await opened({ driver: { local: [{ text: 'SYST:LOC' }] } });
+    load.told.length = 0;
+    await instrument.release();
+    expect(load.told).toEqual(['INP OFF', 'SYST:ERR?', 'SYST:LOC']);
+  });
+
+  it('is handed back also when it refuses what is told it before', async () => {
+    const { instrument, load } = await opened({
+      driver: { local: [{ text: 'SYST:LOC' }], release: [{ text: 'NONSENSE' }] },
+    });
+    load.told.length = 0;
+    await expect(instrument.release()).rejects.toMatchObject({
+      code: 'INSTRUMENT_COMPLAINED',
+      part: { section: 'release', index: 0 },
+    });
+    expect(load.told.slice(-1)).toEqual(['SYST:LOC']);
+  });
+
+  it('is handed back when it does not open', async () => {
+    const load = toyLoad({ replies: { '*IDN?': undefined } });
+    const clock = new VirtualClock(new Date(0));
+    const connection = new VirtualLine(clock, load.react);
+    const opening = Instrument.open({
+      ...{ role: 'load', connection, clock },
+      driver: { ...toyDriver, ...driver },
+    });
+    await expect(opening).rejects.toMatchObject({ code: 'INSTRUMENT_SILENT' });
+    expect(load.told).toEqual(['', 'SYST:REM', '*IDN?', 'SYST:LOC']);
+  });
+
+  it('can be left as it is, with its panel working again', async () => {
+    const { instrument, load } = await opened({ driver });
+    load.told.length = 0;
+    await instrument.leave();
+    expect(load.told).toEqual(['SYST:LOC']);
+  });
+
+  it('may take its time to get there before it says who it is', async () => {
+    const clock = new VirtualClock(new Date(0));
+    const load = toyLoad();
+    const connection = new VirtualLine(clock, (message, at) =>
+      load
+        .react(message, at)
+        .map(({ bytes, at: then }) => ({ bytes, at: message === '*IDN?' ? at + 4 : then })),
+    );
+    const ready = {
+      ask: '*OPC?',
+      when: { kind: 'answer', like: expression('1') },
+      every: 0.1,
+      within: 5,
+    } as const;
+    const opening = Instrument.open({
+      ...{ role: 'load', connection, clock },
+      driver: { ...toyDriver, ...driver, ready, remote: [{ text: 'SYST:REM', untilReady: true }] },
+    });
+    await expect(opening).resolves.toMatchObject({ identity: 'NURSERY,LOAD,K1,1.0' });
+  });
+});
+
 describe('an instrument', () => {
   it('does what its driver says, with the values as plain decimals', async () => {
     const { instrument, load } = await opened();

@@ -40,6 +40,55 @@ describe('a number that a driver finds by its pattern', () => {
   });
 });
 
+describe('a number in another unit than that of its dimension', () => {
+  const plain = { kind: 'number', ask: [{ text: 'VOL?' }], dimension: 'voltage', factor: 0.001 } as const;
+  const withUnit = {
+    ...plain,
+    pattern: expression('^(?<value>[-+0-9.Ee]+) ?(?<unit>[a-zA-Z\u0080-\u00ff]*)$'),
+  } as const;
+  const ohms = { ...withUnit, dimension: 'resistance', factor: 1 } as const;
+
+  it.each([
+    ['12.031', plain, 0.012031],
+    ['-4.35', { ...plain, factor: 100 }, -435],
+    ['12.031', { ...plain, factor: -0.001, scale: -1 }, -0.012031],
+    ['12.031 mV', withUnit, 0.012031],
+    ['12.031V', withUnit, 12.031],
+    ['12.031', withUnit, 0.012031],
+    ['1.2 kOhm', ohms, 1200],
+    ['4.7MOHM', ohms, 4_700_000],
+    ['1.2E3 OHM', ohms, 1200],
+    ['0.5 uA', { ...withUnit, dimension: 'current' }, 5e-7],
+  ] as const)('%s keeps its last digit', (reply, reading, value) => {
+    expect(readNumber(reply, reading, about)).toEqual({ kind: 'value', value });
+  });
+
+  it('is turned round by its scale, whoever names the unit', () => {
+    const reversed = { ...withUnit, factor: -0.001, scale: -1 } as const;
+    expect(readNumber('12.031 mV', reversed, about)).toEqual({ kind: 'value', value: -0.012031 });
+    expect(readNumber('12.031 V', reversed, about)).toEqual({ kind: 'value', value: -12.031 });
+  });
+
+  it.each([
+    ['9.9E37', { kind: 'overload' }],
+    ['-9.9E37 mV', { kind: 'overload' }],
+    ['9.91E37 V', { kind: 'not-a-number' }],
+  ] as const)('%s is no value in any unit', (reply, measurement) => {
+    expect(readNumber(reply, withUnit, about)).toEqual(measurement);
+    expect(readNumber(reply.split(' ')[0] ?? '', plain, about)).toEqual(measurement);
+  });
+
+  it.each([
+    ['1.2 mohm', ohms, 'a resistance in a unit that can be read in one way only'],
+    ['12.031 A', withUnit, 'a voltage in a unit that can be read in one way only'],
+    ['12.031 xV', withUnit, 'a voltage in a unit that can be read in one way only'],
+  ] as const)('%s is not guessed at', (reply, reading, expected) => {
+    expect(() => readNumber(reply, reading, about)).toThrow(
+      expect.objectContaining({ code: 'REPLY_NOT_UNDERSTOOD', reply, expected }) as Error,
+    );
+  });
+});
+
 describe('a yes or no', () => {
   const reading = {
     kind: 'flag',

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { decimalExponent, shifted, shiftedText } from '../../src/quantity/decimal-text.js';
+import { decimalExponent, product, shifted, shiftedText } from '../../src/quantity/decimal-text.js';
 
 describe('the decimal point moves in the text, and no digit changes', () => {
   it.each<[number, number, number | undefined, string]>([
@@ -26,6 +26,27 @@ describe('the decimal point moves in the text, and no digit changes', () => {
         expect(Number(`${shiftedText(value, places)}e0`.replace(/(e-?\d+)e0$/, '$1'))).toBe(
           shifted(value, places),
         );
+      }),
+    );
+  });
+});
+
+describe('a product of two decimals', () => {
+  it('is the one that they are written to have', () => {
+    expect(4.35 * 100).not.toBe(435);
+    expect(product(4.35, 100)).toBe(435);
+    expect(product(12.031, -0.001)).toBe(-0.012031);
+    expect(product(0, -1)).toBe(0);
+    expect(product(Number.POSITIVE_INFINITY, -2)).toBe(Number.NEGATIVE_INFINITY);
+  });
+
+  it('with a power of ten moves the point, and is within a rounding of what multiplying gives', () => {
+    const number = fc.double({ noNaN: true, noDefaultInfinity: true, min: -1e100, max: 1e100 });
+    fc.assert(
+      fc.property(number, number, fc.integer({ min: -9, max: 9 }), (one, other, places) => {
+        fc.pre(Math.min(Math.abs(one), Math.abs(other)) > 1e-100);
+        expect(product(one, Number(`1e${places}`))).toBe(shifted(one, places));
+        expect(Math.abs(product(one, other) / (one * other) - 1)).toBeLessThan(1e-15);
       }),
     );
   });
