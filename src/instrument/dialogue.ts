@@ -146,6 +146,7 @@ export class Dialogue {
         begun: this.#line.begun(),
       });
     }
+    this.#line.caughtUp();
     this.#inStep = true;
     return reply;
   }
@@ -195,7 +196,9 @@ export class Dialogue {
       const heard = await this.#identityRound(giveUp);
       quietRounds = heard === 'then-quiet' ? quietRounds + 1 : 0;
       if (heard === 'nothing') silentRounds += 1;
-      if ((heard === 'all' || quietRounds === 2) && (await this.#clearLine()).isWhole) {
+      if (heard !== 'all' && quietRounds < 2) continue;
+      this.#line.caughtUp();
+      if ((await this.#clearLine()).isWhole) {
         this.#notice({ kind: 'in-step-again' });
         return;
       }

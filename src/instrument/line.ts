@@ -44,7 +44,7 @@ export class Line {
   #deafUntil = -Infinity;
   #sentAt = -Infinity;
   #missing: Missing | undefined;
-  /** Something was waited for in vain, and nothing has come since: nothing else is waited for before a message. */
+  /** Something was waited for in vain, and nothing has come since: what is only told does not wait again. */
   #isSilent = false;
 
   constructor(connection: Connection, wire: Wire, clock: Clock) {
@@ -71,7 +71,7 @@ export class Line {
    * @throws ConnectionLostError
    */
   async send(message: string, rest: Seconds = 0): Promise<void> {
-    await this.#untilItHears();
+    await this.#untilItHears(this.#isSilent ? 0 : this.#wire.timeout);
     const bytes = Buffer.from(message + this.#wire.sendEnd, 'latin1');
     await this.#connection.write(bytes);
     this.#sentAt = this.#quietSince = this.#clock.now();
@@ -101,6 +101,11 @@ export class Line {
     }
   }
 
+  /** The last reply belongs to the last message: nothing of an earlier one is still to come. */
+  caughtUp(): void {
+    this.#sideTalk.caughtUp();
+  }
+
   /** What has come of a reply that is not whole. */
   begun(): Uint8Array {
     return this.#sideTalk.begun(this.#reader);
@@ -112,7 +117,7 @@ export class Line {
    * @throws ConnectionLostError
    */
   async clear(): Promise<Unasked> {
-    await this.#untilItHears();
+    await this.#untilItHears(this.#wire.timeout);
     let { size, begins } = this.#sideTalk.overheard();
     let last: Uint8Array = Buffer.alloc(0);
     for (;;) {
@@ -140,21 +145,21 @@ export class Line {
     return undefined;
   }
 
-  async #untilItHears(): Promise<void> {
-    await this.#untilSettled();
+  async #untilItHears(patience: Seconds): Promise<void> {
+    await this.#untilSettled(patience);
     const pause = Math.max(this.#quietSince + this.#wire.gap, this.#deafUntil) - this.#clock.now();
     if (pause > 0) await this.#clock.sleep(pause);
   }
 
   /** Waits for what is due after the last message. Where that does not come, it goes on without. */
-  async #untilSettled(): Promise<void> {
-    const end = Math.max(this.#quietSince, this.#deafUntil) + this.#wire.timeout;
+  async #untilSettled(patience: Seconds): Promise<void> {
+    const end = Math.max(this.#quietSince, this.#deafUntil) + patience;
     while (!this.#sideTalk.isSettled(this.#reader)) {
-      const left = this.#isSilent ? 0 : Math.max(0, end - this.#clock.now());
-      const bytes = await this.#connection.receive(left);
+      const bytes = await this.#connection.receive(Math.max(0, end - this.#clock.now()));
       if (bytes === undefined) {
-        this.#missing ??= this.#sideTalk.giveUp();
-        this.#isSilent = true;
+        const missing = this.#sideTalk.giveUp();
+        this.#missing ??= missing;
+        this.#isSilent = missing !== undefined;
         return;
       }
       this.#received(bytes);

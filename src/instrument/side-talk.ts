@@ -69,9 +69,14 @@ export class SideTalk {
     this.#unrepeated = [...this.#unrepeated, message].slice(-mostUnrepeated);
   }
 
-  /** A reply was read: whatever else was to come before it has come, or never will. */
+  /** A reply was read, this message's or an earlier one's. */
   answered(): void {
     this.#isAnswered = true;
+    this.#promptIsDue = this.#prompt !== '';
+  }
+
+  /** The last reply was this message's: whatever else was to come before it has come, or never will. */
+  caughtUp(): void {
     this.#mayStray = false;
   }
 
@@ -149,7 +154,8 @@ export class SideTalk {
     if (!this.#isOverhearing) return reader.held > 0;
     const { ahead } = reader;
     const end = lineEnd(ahead);
-    const line = ahead.subarray(0, end === -1 ? ahead.length : end + 1);
+    const isReturn = ahead[end] === 0x0d && ahead[end + 1] === 0x0a;
+    const line = ahead.subarray(0, end === -1 ? ahead.length : end + (isReturn ? 2 : 1));
     if (!isBlank(line)) {
       const { size, begins } = this.#overheard;
       this.#overheard = {
