@@ -38,9 +38,7 @@ export class WaysBack {
     this.#givenUp = true;
   }
 
-  /** None to a recorded dialogue: it would begin from the beginning. */
-  to(address: ConnectionAddress, driver: Driver, post: string): WayBack | undefined {
-    if (address.kind === 'replay') return undefined;
+  to(address: ConnectionAddress, driver: Driver, post: string): WayBack {
     return {
       connect: (within) => this.#connect(address, driver, post, within),
       // Making safe has its own way: what makes safe is told before anything is asked.

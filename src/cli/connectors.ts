@@ -1,7 +1,7 @@
 import type { Clock } from '../clock/clock.js';
+import type { ReplayAddress } from '../files/bench.js';
 import { type Connect, connectorFor } from '../instrument/connect.js';
 import type { Connection } from '../instrument/connection.js';
-import type { ReplayAddress } from '../instrument/replay-connection.js';
 import type { OpenedSimulation } from '../simulation/open-simulation.js';
 
 /** The ways to connect, each loaded only when it is used. */

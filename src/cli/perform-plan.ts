@@ -40,6 +40,8 @@ export interface PerformOptions {
   /** Aborted by whoever will not wait for an answer: the connections are given up, the load told afresh. */
   readonly hurry: AbortSignal;
   readonly watch: RunWatcher;
+  /** Told as soon as the record has its folder. */
+  readonly recorded?: (folder: RunFolder) => void;
 }
 
 /**
@@ -94,6 +96,7 @@ async function performWatched(
   try {
     const { folder, journal } = await beginRecord(loaded, world, bench, options.runs);
     try {
+      options.recorded?.(folder);
       early.forEach((event) => {
         journal.append(event);
       });

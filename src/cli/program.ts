@@ -61,6 +61,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
       'how far it may be from the baseline: a shipped tolerance by its name, or a file',
     )
     .option('--yes', 'acknowledge wiring and cautions beforehand (for unattended benches)')
+    .option('--trace', 'keep every byte and when it came with the record, so that the run can be played back')
     .option('--dry-run', 'show what would be done, and touch nothing')
     .addOption(json())
     .action(async (procedure: string | undefined, options: RunOptions) => {

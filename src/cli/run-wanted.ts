@@ -12,6 +12,7 @@ export interface RunOptions {
   readonly tolerance?: string;
   readonly yes?: boolean;
   readonly dryRun?: boolean;
+  readonly trace?: boolean;
   readonly json?: boolean;
 }
 

@@ -2,6 +2,7 @@ import { join } from 'node:path';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { printable } from '../quantity/printable.js';
 import { jsonText } from '../report/json-text.js';
+import type { Bench } from '../files/bench.js';
 import { needsOperator } from '../run/plan-circuit.js';
 import { OperatorAbsentError } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
@@ -10,9 +11,10 @@ import type { Operator } from '../steps/operator.js';
 import { errorText } from './error-text.js';
 import { statusOfOutcome } from './exit-status.js';
 import { loadPlan, type LoadedPlan } from './load-plan.js';
-import { performPlan, type PlanPerformed } from './perform-plan.js';
+import { performPlan, type PerformOptions, type PlanPerformed } from './perform-plan.js';
 import { planAsJson, planAsText } from './plan-shown.js';
 import { ProgressLine } from './progress-line.js';
+import { recordedOperator } from './recorded-operator.js';
 import { resumeHint } from './resume-hint.js';
 import { loadResumed } from './resume-plan.js';
 import { resumptionAsText } from './resume-shown.js';
@@ -21,6 +23,7 @@ import { shown } from './shown.js';
 import { simulatedOperator } from './simulated-operator.js';
 import { stopOnSignals, type StopWishes } from './stop-signals.js';
 import type { Streams } from './streams.js';
+import { keepAlone, keepWith, replayHint, tracedRun } from './traced-run.js';
 import { type World, worldOf } from './wiring.js';
 
 /** `railproof run`: performs a procedure, or goes on with one that was broken off, and prints what it shows. */
@@ -34,23 +37,61 @@ export async function run(options: RunOptions, streams: Streams): Promise<ExitCo
     streams.stdout.write(options.json === true ? jsonText(planAsJson(plan, done)) : planAsText(plan, done));
     return exitCodes.conforms;
   }
+  const runs = options.runs ?? (resumed === undefined ? 'runs' : join(resumed.run.folder.path, '..'));
   const world = await worldOf(plan.bench, plan.drivers);
   const stop = stopOnSignals(streams);
-  const operator = operatorFor(world, options.yes === true, streams, stop);
-  const watch = new ProgressLine(streams.stderr, plan, world.clock);
   try {
+    const operator = await operatorFor(plan.bench, world, options.yes === true, streams, stop);
     requireOperator(loaded, operator, options.yes === true);
-    const performed = await performPlan(loaded, world, {
-      runs: options.runs ?? (resumed === undefined ? 'runs' : join(resumed.run.folder.path, '..')),
-      operator,
-      signal: stop.signal,
-      hurry: stop.hurry,
-      watch,
-    });
-    watch.clear();
+    const play = options.trace === true ? playTraced : playPlain;
+    const performed = await play(loaded, { world, operator, runs, stop, streams });
     return tell(performed, options.json === true, streams);
   } finally {
     stop.release();
+  }
+}
+
+interface Stage {
+  readonly world: World;
+  readonly operator: Operator;
+  readonly runs: string;
+  readonly stop: StopWishes;
+  readonly streams: Streams;
+}
+
+async function playPlain(
+  loaded: LoadedPlan,
+  { world, operator, runs, stop, streams }: Stage,
+  recorded?: PerformOptions['recorded'],
+): Promise<PlanPerformed> {
+  const watch = new ProgressLine(streams.stderr, loaded.plan, world.clock);
+  const { signal, hurry } = stop;
+  try {
+    return await performPlan(loaded, world, {
+      ...{ runs, operator, signal, hurry, watch },
+      ...(recorded && { recorded }),
+    });
+  } finally {
+    watch.clear();
+  }
+}
+
+/** The same, and every byte kept: with the record, or, where there came to be none, beside the others. */
+async function playTraced(loaded: LoadedPlan, stage: Stage): Promise<PlanPerformed> {
+  const { stderr } = stage.streams;
+  const { world, operator, files } = tracedRun(stage.world, stage.operator, (text) => {
+    stderr.write(`\n${fitted(printable(text), stderr.columns)}\n`);
+  });
+  try {
+    return await playPlain(loaded, { ...stage, world, operator }, (folder) => {
+      keepWith(folder, files, loaded);
+    });
+  } catch (error) {
+    keepAlone(files, loaded, stage.runs, world.clock.wall());
+    throw error;
+  } finally {
+    if (files.folder !== undefined) stderr.write(replayHint(loaded, files.folder));
+    files.close();
   }
 }
 
@@ -89,7 +130,14 @@ function tellSafety({ safety, sourceSafety }: PlanPerformed, { stderr }: Streams
   }
 }
 
-function operatorFor(world: World, yes: boolean, streams: Streams, stop: StopWishes): Operator {
+async function operatorFor(
+  { operator }: Bench,
+  world: World,
+  yes: boolean,
+  streams: Streams,
+  stop: StopWishes,
+): Promise<Operator> {
+  if (operator !== undefined) return recordedOperator(operator.file, world.clock);
   return world.simulation === undefined
     ? new TerminalOperator({
         input: streams.stdin,

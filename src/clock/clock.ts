@@ -7,3 +7,13 @@ export interface Clock {
   /** Waits; rejects with the signal's reason when it is aborted first. */
   sleep(seconds: number, signal?: AbortSignal): Promise<void>;
 }
+
+/** A clock that can be set forward to a moment that is known to the last digit. */
+export interface SettableClock extends Clock {
+  /** It is exactly that moment now, or a later one already. */
+  reach(moment: number): void;
+}
+
+export function isSettable(clock: Clock): clock is SettableClock {
+  return 'reach' in clock;
+}

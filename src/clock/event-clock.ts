@@ -1,4 +1,4 @@
-import type { Clock } from './clock.js';
+import type { Clock, SettableClock } from './clock.js';
 
 /**
  * A clock on which only what happens takes time: a wait, bytes on a line, an answer at a prompt. What is
@@ -6,7 +6,7 @@ import type { Clock } from './clock.js';
  * the last digit. It begins at 0 s and follows another clock, from which it is behind by no more than what was
  * computed since the last happening.
  */
-export class EventClock implements Clock {
+export class EventClock implements SettableClock {
   readonly #base: Clock;
   readonly #began: number;
   #now = 0;
@@ -37,7 +37,6 @@ export class EventClock implements Clock {
     return this.#now;
   }
 
-  /** It is that moment now, or a later one already. */
   reach(moment: number): void {
     this.#now = Math.max(this.#now, moment);
   }

@@ -1,5 +1,5 @@
 import { performance } from 'node:perf_hooks';
-import type { Clock } from './clock.js';
+import type { SettableClock } from './clock.js';
 
 /** Milliseconds of the machine's time after which its own events get a turn: a Ctrl-C, above all. */
 const breathEvery = 50;
@@ -8,7 +8,7 @@ const breathEvery = 50;
  * A clock that only moves when someone waits on it: a wait is over at once, and the time has passed.
  * It starts at 0 s; `began` is the wall-clock date given to that moment.
  */
-export class VirtualClock implements Clock {
+export class VirtualClock implements SettableClock {
   #now = 0;
   readonly #began: Date;
   #breathed = performance.now();
@@ -25,7 +25,7 @@ export class VirtualClock implements Clock {
     return new Date(this.#began.getTime() + this.#now * 1000);
   }
 
-  /** It is exactly that moment now, or a later one already: a wait until then would be a sum, and rounded. */
+  /** A wait until then would be a sum, and rounded. */
   reach(moment: number): void {
     this.#now = Math.max(this.#now, moment);
   }

@@ -4,7 +4,7 @@ import { choice, line, quantity } from './building-blocks.js';
 import { camelKeys, withoutHeader } from './camel-keys.js';
 import { headers } from './file-kind.js';
 import { groupProblems, groupSchema } from './group-schema.js';
-import { instrumentPlace as place } from './instrument-place.js';
+import { instrumentPlace as place, recordedAnswers } from './instrument-place.js';
 import { simulationSchema } from './simulation-schema.js';
 
 /** Longer than any input capacitor keeps a module latched. */
@@ -66,6 +66,7 @@ export const benchSchema: z.ZodType<Bench> = z
       .describe("The surroundings; a module's rise is above them."),
     group: groupSchema.exactOptional(),
     simulation: simulationSchema.exactOptional(),
+    operator: recordedAnswers.exactOptional(),
   })
   .meta({
     title: 'railproof bench',
@@ -90,6 +91,11 @@ export const benchSchema: z.ZodType<Bench> = z
           "a simulated instrument needs a 'simulation' section, which says what is really there";
         complain([...placeOf(post), 'connection'], message);
       }
+    }
+    if (bench.operator !== undefined) {
+      const real = postsOf(bench).find(([, { connection }]) => connection.kind !== 'replay');
+      const message = `recorded answers go with replayed instruments only, and the ${real?.[0] ?? ''} is none`;
+      if (real !== undefined) complain(['operator'], message);
     }
     for (const role of Object.keys(bench.simulation?.instruments ?? {})) {
       if (postsOf(bench).some(([post]) => roleOf(post) === role)) continue;

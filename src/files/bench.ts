@@ -29,6 +29,8 @@ export interface Bench {
   readonly group?: Group;
   /** What is really there, on a bench with simulated instruments. */
   readonly simulation?: Simulation;
+  /** Recorded answers in place of the person at the bench, where every instrument is replayed. */
+  readonly operator?: ReplayAddress;
 }
 
 /** The places of a circuit of several modules, in the order of the circuit, and how a voltage is read at each. */
@@ -135,9 +137,15 @@ export type ConnectionAddress =
   | { readonly kind: 'tcp'; readonly host: string; readonly port: number }
   /** What it does not say of the line the driver says, or it is as usual. */
   | ({ readonly kind: 'serial'; readonly path: string } & Partial<SerialSettings>)
-  | { readonly kind: 'replay'; readonly file: string }
+  | ReplayAddress
   /** `simulated:` picks the dialect that understands the driver; `simulated:<dialect>` names one. */
   | { readonly kind: 'simulated'; readonly dialect?: string };
+
+/** A recording, by its file. */
+export interface ReplayAddress {
+  readonly kind: 'replay';
+  readonly file: string;
+}
 
 export interface SerialSettings {
   readonly baud: number;

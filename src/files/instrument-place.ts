@@ -1,7 +1,10 @@
 import { z } from 'zod';
 import { count, line, readFromText } from './building-blocks.js';
+import type { ReplayAddress } from './bench.js';
 import { addressForms, AddressError, parseAddress } from './connection-address.js';
 import { found } from './plain-words.js';
+
+const answersExample = 'replay:operator.jsonl';
 
 const connection = readFromText(
   {
@@ -13,6 +16,21 @@ const connection = readFromText(
   (value) => {
     if (typeof value === 'string') return parseAddress(value);
     throw new AddressError(`${found(value)}; an address is needed: ${addressForms[0]}`, String(value));
+  },
+);
+
+/** What was recorded of the person at the bench. */
+export const recordedAnswers = readFromText(
+  {
+    description: 'Recorded answers in place of the person at the bench, where every instrument is replayed.',
+    pattern: '^replay:.+$',
+    examples: [answersExample],
+  },
+  `a recording is needed: ${answersExample}`,
+  (value): ReplayAddress => {
+    const address = typeof value === 'string' ? parseAddress(value) : undefined;
+    if (address?.kind === 'replay') return address;
+    throw new AddressError(`${found(value)}; a recording is needed: ${answersExample}`, String(value));
   },
 );
 

@@ -1,5 +1,5 @@
 import { dirname, isAbsolute, join } from 'node:path';
-import type { Bench, InstrumentPlace } from './bench.js';
+import type { Bench, InstrumentPlace, ReplayAddress } from './bench.js';
 import { benchSchema } from './bench-schema.js';
 import { parseFile } from './parse-file.js';
 import { readAndParse, type FileRead } from './read-text.js';
@@ -17,7 +17,7 @@ export function readBench(path: string): Promise<FileRead<Bench>> {
   return readAndParse(path, (text, fileName) => besideBench(parseBench(text, fileName), dirname(path)));
 }
 
-/** The same bench, its replayed dialogues looked for in that folder. */
+/** The same bench, its recordings looked for in that folder. */
 export function besideBench(bench: Bench, folder: string): Bench {
   const instruments = Object.entries(bench.instruments).map(([role, place]) => [
     role,
@@ -29,12 +29,16 @@ export function besideBench(bench: Bench, folder: string): Bench {
   return {
     ...bench,
     instruments: Object.fromEntries(instruments) as Bench['instruments'],
+    ...(bench.operator === undefined ? {} : { operator: fileIn(bench.operator, folder) }),
     ...(bench.group === undefined || places === undefined ? {} : { group: { ...bench.group, places } }),
   };
 }
 
 function inFolder(place: InstrumentPlace, folder: string): InstrumentPlace {
   const { connection } = place;
-  if (connection.kind !== 'replay' || isAbsolute(connection.file)) return place;
-  return { ...place, connection: { kind: 'replay', file: join(folder, connection.file) } };
+  return connection.kind === 'replay' ? { ...place, connection: fileIn(connection, folder) } : place;
+}
+
+function fileIn({ kind, file }: ReplayAddress, folder: string): ReplayAddress {
+  return { kind, file: isAbsolute(file) ? file : join(folder, file) };
 }

@@ -1,5 +1,5 @@
 import type { Clock } from '../clock/clock.js';
-import type { ConnectionAddress } from '../files/bench.js';
+import type { ReplayAddress } from '../files/bench.js';
 import { formatAddress } from '../files/connection-address.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { ConnectionLostError, InstrumentUnreachableError, PortBusyError } from './connection-errors.js';
@@ -9,8 +9,6 @@ import { ReplayMismatchError } from './replay-errors.js';
 import { ReplayTape } from './replay-tape.js';
 import { ReplayTime } from './replay-time.js';
 import { visible } from './visible.js';
-
-export type ReplayAddress = Extract<ConnectionAddress, { kind: 'replay' }>;
 
 /**
  * A way to recorded dialogues in the place of instruments: each answers as it did then, and what it is told

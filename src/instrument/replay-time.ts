@@ -1,10 +1,5 @@
-import type { Clock } from '../clock/clock.js';
+import { type Clock, isSettable, type SettableClock } from '../clock/clock.js';
 import type { Seconds } from '../quantity/quantity.js';
-
-/** A clock that can be set forward to a moment, to the last digit. */
-interface SettableClock extends Clock {
-  reach(moment: Seconds): void;
-}
 
 /** The clocks of recording and replay agree to rounding, no better. */
 const rounding: Seconds = 1e-9;
@@ -48,8 +43,4 @@ export class ReplayTime {
     this.#reached += Math.max(0, within);
     await this.#clock.sleep(within);
   }
-}
-
-function isSettable(clock: Clock): clock is SettableClock {
-  return 'reach' in clock;
 }

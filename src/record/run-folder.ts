@@ -26,6 +26,8 @@ export interface RunFolder {
   readonly findings: string;
   /** There only where the watchman had to act. */
   readonly watchman: string;
+  /** The folder of what went over the lines; there only where that was asked for. */
+  readonly trace: string;
 }
 
 export function runFolderAt(path: string): RunFolder {
@@ -36,6 +38,7 @@ export function runFolderAt(path: string): RunFolder {
     readings: join(path, 'readings.csv'),
     findings: join(path, 'findings.json'),
     watchman: join(path, 'watchman.json'),
+    trace: join(path, 'trace'),
   };
 }
 

@@ -1,0 +1,4 @@
+/** As a shell takes it for one word. */
+export function quoted(path: string): string {
+  return /^[\w./:@+-]+$/.test(path) ? path : `'${path.replaceAll("'", String.raw`'\''`)}'`;
+}
