@@ -99,7 +99,7 @@ describe('an instrument that repeats messages, or sends a prompt,', () => {
           const cuts: Cuts = (length) =>
             [...new Set(marks.map((mark) => 1 + (mark % length)))].sort((a, b) => a - b);
           const wire = {
-            replyEnd: replyEnd ?? '',
+            replyEnd,
             echo: echo !== undefined,
             ...(prompt !== undefined && { prompt }),
           };
