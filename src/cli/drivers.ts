@@ -66,10 +66,11 @@ async function tryOut(name: string, address: string, json: boolean, streams: Str
   let ending: Ending = { how: 'as-it-should' };
   try {
     if (!json) streams.stderr.write(`${driver.name} at ${printable(connection.address)}\n`);
-    for await (const result of tryDriver({ driver, connection, clock: realClock, signal: stop.signal })) {
+    const onResult = (result: TrialResult): void => {
       results.push(result);
       if (!json) streams.stdout.write(`${resultLine(result)}\n`);
-    }
+    };
+    await tryDriver({ driver, connection, clock: realClock, signal: stop.signal, onResult });
     if (stop.signal.aborted) ending = { how: 'stopped', error: stop.signal.reason };
   } catch (error) {
     ending = { how: 'broken-off', error: stop.signal.aborted ? stop.signal.reason : error };

@@ -1,37 +1,20 @@
-import type { Clock } from '../clock/clock.js';
-import type { Driver, DriverReading } from '../files/driver.js';
-import type { Seconds } from '../quantity/quantity.js';
-import type { Connection } from './connection.js';
-import { Dialogue } from './dialogue.js';
-import { readErrorQueue } from './error-queue.js';
+import type { Driver, DriverReading, Message, Wire } from '../files/driver.js';
+import type { Exchange } from '../files/driver-dialogue.js';
+import { placeholderOf } from '../files/driver-checks.js';
+import type { DriverPart } from './driver-part.js';
+import { readErrors, type ReportedError } from './error-report.js';
 import { harmlessValues, whyLeftOut } from './harmless.js';
 import { isIdentityFor } from './identity.js';
 import { tellMakeSafe } from './make-safe.js';
 import { fillMessage } from './message.js';
-import { readChannel, readFlag, readNumber } from './reading.js';
-import {
-  InstrumentSilentError,
-  OutOfStepError,
-  ReplyNotUnderstoodError,
-  ReplyTooLongError,
-} from './reply-errors.js';
-import type { Measurement } from './scpi-number.js';
+import { meaningOf, meaningText } from './reading-meaning.js';
+import { readFlag, type About } from './reading.js';
+import { InstrumentSilentError, ReplyNotUnderstoodError } from './reply-errors.js';
+import { ask, type Talk, tell } from './tell.js';
+import type { Switching } from './trial-switching.js';
+import type { Answer, TrialLine } from './trial-line.js';
+import { isProven, type TrialResult } from './trial-result.js';
 import { visible } from './visible.js';
-
-export interface TrialResult {
-  readonly part: 'identity' | 'error-queue' | 'prepare' | 'operation' | 'reading' | 'proof';
-  /** Of the operation or the reading; of the part otherwise. */
-  readonly name: string;
-  readonly sent: string;
-  /** Escaped and cut; undefined when nothing came. */
-  readonly received: string | undefined;
-  /** `unclear` where a reply makes no sense, and where there is no error queue that could tell. */
-  readonly verdict: 'understood' | 'refused' | 'silent' | 'unclear' | 'not-sent';
-  readonly detail: string;
-  readonly seconds: Seconds;
-}
-
-type Answer = Pick<TrialResult, 'received' | 'verdict' | 'detail'>;
 
 /** What an instrument is left with, whatever it was told on the way. */
 const leftWith: Readonly<Partial<Record<Driver['role'], readonly string[]>>> = {
@@ -39,54 +22,46 @@ const leftWith: Readonly<Partial<Record<Driver['role'], readonly string[]>>> = {
   meter: ['measure-voltage', 'make-safe'],
 };
 
-/** Whether there was nothing to prove, or it is off beyond doubt. */
-export function isProven(proof: TrialResult | undefined): boolean {
-  return proof === undefined || proof.verdict === 'understood';
-}
-
-export interface TrialWalkParts {
-  readonly driver: Driver;
-  readonly connection: Connection;
-  readonly clock: Clock;
-}
-
 /** A driver's messages, told and asked one by one, and what the instrument makes of each. */
 export class TrialWalk {
   readonly #driver: Driver;
-  readonly #clock: Clock;
-  readonly #dialogue: Dialogue;
-  readonly #isIdentity: (reply: string) => boolean;
+  readonly #line: TrialLine;
+  /** The channel that the exchanges are of, where the driver has several. */
+  readonly #channel: { readonly channel?: number };
+  #talk: Talk;
 
-  constructor({ driver, connection, clock }: TrialWalkParts) {
-    this.#driver = driver;
-    this.#clock = clock;
-    this.#isIdentity = isIdentityFor(driver);
-    this.#dialogue = new Dialogue({
-      connection,
-      wire: driver.wire,
-      clock,
-      identify: driver.identify,
-      isIdentity: this.#isIdentity,
-    });
+  constructor(line: TrialLine, wire: Wire, channel: number | undefined) {
+    this.#driver = line.driver;
+    this.#line = line;
+    this.#channel = channel === undefined ? {} : { channel };
+    this.#talk = line.talk(wire);
+  }
+
+  /** From now on it is spoken to in that way. */
+  speak(wire: Wire): void {
+    this.#talk = this.#line.talk(wire);
   }
 
   makeSafe(): Promise<void> {
-    return tellMakeSafe(this.#dialogue, this.#driver);
+    return tellMakeSafe(this.#talk.dialogue, this.#driver);
   }
 
   /** All that the driver says, in its order, but for how it ends. */
   async *messages(): AsyncGenerator<TrialResult, void, undefined> {
-    const { errors, prepare, operations, readings } = this.#driver;
-    if (errors !== 'none') yield await this.errorQueue(errors);
-    for (const { text } of prepare) yield await this.told('prepare', 'prepare', text);
+    const { errors, remote, prepare, operations, readings } = this.#driver;
+    if (errors !== 'none') yield await this.#errorQueue(errors);
+    yield* this.#listed('remote', remote);
+    yield* this.#listed('prepare', prepare);
     for (const operation of Object.keys(operations)) yield* this.operation(operation);
-    for (const [name, reading] of Object.entries(readings)) yield* this.reading(name, reading);
+    for (const [name, reading] of Object.entries(readings)) yield* this.#reading(name, reading);
   }
 
   async *ending(): AsyncGenerator<TrialResult, void, undefined> {
     for (const operation of leftWith[this.#driver.role] ?? ['make-safe']) yield* this.operation(operation);
+    yield* this.#listed('release', this.#driver.release);
     const proof = await this.proofThatItIsOff();
     if (proof) yield proof;
+    for (const message of this.#driver.local) yield await this.#local(message);
   }
 
   /** Nobody listens any more, so what fails is passed over and the rest is told all the same. */
@@ -100,133 +75,220 @@ export class TrialWalk {
   }
 
   identity(): Promise<TrialResult> {
-    return this.#timed('identity', 'identity', this.#driver.identify, async () => {
-      const reply = await this.#dialogue.ask(this.#driver.identify);
-      if (this.#isIdentity(reply)) return understood(reply);
+    const { identify } = this.#driver;
+    return this.#result('identity', 'identity', identify, async () => {
+      const reply = await this.#talk.dialogue.ask(identify);
+      const fits = isIdentityFor(this.#driver)(reply);
+      const is = fits ? 'understood' : 'not-understood';
       return {
         received: visible(reply),
-        verdict: 'unclear',
-        detail: 'not an identity that the driver is for',
+        verdict: fits ? 'understood' : 'unclear',
+        detail: fits ? '' : 'not an identity that the driver is for',
+        exchanges: [{ kind: 'identity', answer: reply, is }],
       };
     });
   }
 
-  errorQueue(errors: Exclude<Driver['errors'], 'none'>): Promise<TrialResult> {
-    return this.#timed('error-queue', 'errors', errors.ask, async () => {
-      const { entries, clear } = await readErrorQueue(this.#dialogue, errors);
-      const received = entries.map(({ number, text }) => `${number} "${visible(text)}"`).join(', ');
-      if (clear)
-        return {
-          ...understood(received),
-          detail: entries.length > 0 ? 'errors from before, now cleared' : 'no errors',
-        };
-      return { received, verdict: 'unclear', detail: 'it does not get clear; does "clear" fit its answer?' };
-    });
-  }
-
-  async *operation(operation: string): AsyncGenerator<TrialResult, void, undefined> {
-    const reason = whyLeftOut(operation, this.#driver);
-    for (const { text: message } of this.#driver.operations[operation] ?? []) {
-      yield reason === undefined
-        ? await this.told(
-            'operation',
-            operation,
-            fillMessage(message, harmlessValues(operation, this.#driver)),
-          )
-        : {
-            ...{ part: 'operation', name: operation, sent: message, seconds: 0 },
-            ...{ received: undefined, verdict: 'not-sent', detail: reason },
-          };
+  /** Switches on, at nothing, for as long as it takes to ask whether it is on. Whoever calls sees to it that it is off. */
+  async *switchOn({ first, on, off, state }: Switching): AsyncGenerator<TrialResult, void, undefined> {
+    for (const operation of first) yield* this.operation(operation);
+    for (const [index, message] of (this.#driver.operations[on] ?? []).entries()) {
+      const values = harmlessValues(on, this.#driver);
+      const filled = { ...message, text: fillMessage(message.text, values) };
+      yield await this.#told('operation', on, filled, { ...this.#part('operations', on), index });
     }
+    const reading = this.#driver.readings[state];
+    if (reading?.kind === 'flag') yield await this.#saysThatItIsOn(state, reading);
+    yield* this.operation(off);
   }
 
-  told(part: TrialResult['part'], name: string, message: string): Promise<TrialResult> {
-    return this.#timed(part, name, message, async () => {
-      await this.#dialogue.tell(message);
-      if (this.#driver.errors === 'none') {
-        return {
-          received: undefined,
-          verdict: 'unclear',
-          detail: 'sent; there is no error queue to ask about it',
-        };
-      }
-      const { entries } = await readErrorQueue(this.#dialogue, this.#driver.errors);
-      if (entries.length === 0) return { received: undefined, verdict: 'understood', detail: '' };
-      const complaint = entries.map(({ number, text }) => `${number} "${visible(text)}"`).join(', ');
-      return { received: complaint, verdict: 'refused', detail: 'in its error queue' };
-    });
-  }
-
-  async *reading(name: string, reading: DriverReading): AsyncGenerator<TrialResult, void, undefined> {
-    for (const { text } of reading.ask.slice(0, -1)) yield await this.told('reading', name, text);
-    const question = reading.ask.at(-1)?.text ?? '';
-    yield await this.#timed('reading', name, question, async () => {
-      const reply = await this.#dialogue.ask(question);
-      return { ...understood(reply), detail: this.#meaning(reply, reading, question) };
-    });
+  /** The messages of an operation, with values that do no harm. */
+  async *operation(operation: string): AsyncGenerator<TrialResult, void, undefined> {
+    const messages = this.#driver.operations[operation] ?? [];
+    const reason = whyLeftOut(operation, this.#driver);
+    if (reason !== undefined) {
+      for (const { text } of messages) yield leftOut(operation, text, reason);
+      return;
+    }
+    const values = harmlessValues(operation, this.#driver);
+    const filled = messages.map((message) => ({ ...message, text: fillMessage(message.text, values) }));
+    for (const [index, message] of filled.entries()) {
+      const part: DriverPart = { ...this.#part('operations', operation), index };
+      const result = await this.#told('operation', operation, message, part);
+      const isLast = index === filled.length - 1;
+      yield isLast
+        ? { ...result, exchanges: [...result.exchanges, this.#performed(operation, filled)] }
+        : result;
+    }
   }
 
   /** Undefined where there is nothing that could be on, or nothing said of how to ask. */
   async proofThatItIsOff(): Promise<TrialResult | undefined> {
-    const reading = this.#driver.readings[this.#driver.role === 'source' ? 'output-state' : 'input-state'];
+    const name = this.#driver.role === 'source' ? 'output-state' : 'input-state';
+    const reading = this.#driver.readings[name];
     if (reading?.kind !== 'flag') return undefined;
-    const question = reading.ask.at(-1)?.text ?? '';
-    const proof = await this.#timed('proof', 'it is off', question, async () => {
-      for (const { text } of reading.ask.slice(0, -1)) await this.#dialogue.tell(text);
-      const reply = await this.#dialogue.ask(question);
-      const on = readFlag(reply, reading, { address: this.#dialogue.address, question });
-      if (!on) return { ...understood(reply), detail: 'off' };
+    const question = questionOf(reading);
+    const proof = await this.#result('proof', 'it is off', question, async () => {
+      const part = this.#part('readings', name);
+      const reply = await this.#atLast(() => ask(this.#talk, reading.ask, part));
+      const on = readFlag(reply, reading, this.#about(question, part));
+      if (!on) return { received: visible(reply), verdict: 'understood', detail: 'off' };
       return { received: visible(reply), verdict: 'refused', detail: 'it says that it is on' };
     });
     if (isProven(proof)) return proof;
     return { ...proof, detail: `${proof.detail}; nothing more is tried: switch it off by hand` };
   }
 
-  #meaning(reply: string, reading: DriverReading, question: string): string {
-    const about = { address: this.#dialogue.address, question };
-    if (reading.kind === 'flag') return readFlag(reply, reading, about) ? 'yes' : 'no';
-    if (reading.kind === 'channel') return String(readChannel(reply, reading, about) ?? 'none');
-    return measured(readNumber(reply, reading, about));
+  async *#listed(
+    part: 'remote' | 'prepare' | 'release',
+    messages: readonly Message[],
+  ): AsyncGenerator<TrialResult, void, undefined> {
+    for (const [index, message] of messages.entries()) {
+      yield await this.#told(part, part, message, { ...this.#part(part), index });
+    }
   }
 
-  async #timed(
+  #local({ text, rest }: Message): Promise<TrialResult> {
+    return this.#result('local', 'local', text, async () => {
+      await this.#talk.dialogue.tell(text, rest);
+      return {
+        received: undefined,
+        verdict: 'unclear',
+        detail: 'told last of all; nothing is asked after it',
+      };
+    });
+  }
+
+  #errorQueue({ ask: question }: Exclude<Driver['errors'], 'none'>): Promise<TrialResult> {
+    return this.#result('error-queue', 'errors', question, async () => {
+      const { entries, clear } = await readErrors(this.#talk.dialogue, this.#driver);
+      const received = listed(entries);
+      const exchanges = entries.map((entry) => this.#reported(entry));
+      if (clear) {
+        const detail = entries.length > 0 ? 'errors from before, now cleared' : 'no errors';
+        return { received, verdict: 'understood', detail, exchanges };
+      }
+      return {
+        ...{ received, verdict: 'unclear', exchanges: [] },
+        detail: 'it does not get clear; does "clear" fit its answer?',
+      };
+    });
+  }
+
+  #told(part: TrialResult['part'], name: string, message: Message, of: DriverPart): Promise<TrialResult> {
+    return this.#result(part, name, message.text, async () => {
+      await tell(this.#talk, [message], of);
+      if (this.#driver.errors === 'none') {
+        const detail = 'sent; there is no error queue to ask about it';
+        return { received: undefined, verdict: 'unclear', detail };
+      }
+      const { entries } = await this.#atLast(() => readErrors(this.#talk.dialogue, this.#driver));
+      if (entries.length === 0) return { received: undefined, verdict: 'understood', detail: '' };
+      const exchanges = entries.map((entry) => this.#reported(entry));
+      return { received: listed(entries), verdict: 'refused', detail: 'in its error queue', exchanges };
+    });
+  }
+
+  async *#reading(name: string, reading: DriverReading): AsyncGenerator<TrialResult, void, undefined> {
+    const part = this.#part('readings', name);
+    const ranges = reading.kind === 'number' ? (reading.ranges ?? []) : [];
+    for (const [range, { select }] of ranges.entries()) {
+      for (const message of select) yield await this.#told('reading', name, message, { ...part, range });
+    }
+    for (const message of reading.ask.slice(0, -1)) yield await this.#told('reading', name, message, part);
+    yield await this.#asked(name, reading, part);
+  }
+
+  #asked(name: string, reading: DriverReading, part: DriverPart): Promise<TrialResult> {
+    const question = questionOf(reading);
+    return this.#result('reading', name, question, async () => {
+      const reply = await this.#atLast(() => ask(this.#talk, reading.ask.slice(-1), part));
+      const heard = (is: Extract<Exchange, { kind: 'reading' }>['heard']): readonly Exchange[] => [
+        {
+          ...{ kind: 'reading', reading: name, sends: reading.ask.map(({ text }) => text) },
+          ...this.#channel,
+          ...(is === undefined ? {} : { heard: is }),
+        },
+      ];
+      try {
+        const is = meaningOf(reply, reading, this.#about(question, part));
+        const exchanges = heard({ answer: reply, is });
+        return { received: visible(reply), verdict: 'understood', detail: meaningText(is), exchanges };
+      } catch (error) {
+        if (!(error instanceof ReplyNotUnderstoodError)) throw error;
+        this.#talk.dialogue.doubt();
+        const exchanges = heard({ answer: reply, is: { kind: 'not-understood' } });
+        return {
+          ...{ received: visible(reply), verdict: 'unclear', exchanges },
+          detail: `expected ${error.expected}`,
+        };
+      }
+    });
+  }
+
+  async #saysThatItIsOn(
+    name: string,
+    reading: Extract<DriverReading, { kind: 'flag' }>,
+  ): Promise<TrialResult> {
+    const asked = await this.#asked(name, reading, this.#part('readings', name));
+    if (asked.verdict !== 'understood' || asked.detail === 'yes') return asked;
+    return { ...asked, verdict: 'refused', detail: 'it says that it is off' };
+  }
+
+  /** What was told just before may have made it deaf for a moment: only twice unheard is silence. */
+  async #atLast<Result>(question: () => Promise<Result>): Promise<Result> {
+    return question().catch((error: unknown) => {
+      if (error instanceof InstrumentSilentError && error.begun === '') return question();
+      throw error;
+    });
+  }
+
+  #result(
     part: TrialResult['part'],
     name: string,
     sent: string,
     act: () => Promise<Answer>,
   ): Promise<TrialResult> {
-    const began = this.#clock.now();
-    const answer = await act().catch((error: unknown) => this.#failed(error));
-    return { part, name, sent, ...answer, seconds: this.#clock.now() - began };
+    return this.#line.result({ part, name, sent }, this.#talk, act);
   }
 
-  #failed(error: unknown): Answer {
-    if (error instanceof InstrumentSilentError) {
-      const received = error.begun === '' ? undefined : error.begun;
-      return { received, verdict: 'silent', detail: `"${visible(error.question)}" was not answered in time` };
-    }
-    if (error instanceof OutOfStepError) {
-      return { received: undefined, verdict: 'silent', detail: 'it could not be brought back in step' };
-    }
-    if (error instanceof ReplyNotUnderstoodError) {
-      this.#dialogue.doubt();
-      return { received: error.reply, verdict: 'unclear', detail: `expected ${error.expected}` };
-    }
-    if (error instanceof ReplyTooLongError) {
-      return {
-        received: error.begins,
-        verdict: 'unclear',
-        detail: `more than ${error.limit} bytes without an end`,
-      };
-    }
-    throw error;
+  #performed(operation: string, messages: readonly Message[]): Exchange {
+    const placeholder = placeholderOf[operation]?.slice(1, -1);
+    const values: Readonly<Record<string, number | undefined>> = {
+      ...harmlessValues(operation, this.#driver),
+    };
+    const value = placeholder === undefined ? undefined : values[placeholder];
+    return {
+      ...{ kind: 'operation', operation, sends: messages.map(({ text }) => text) },
+      ...(value === undefined ? {} : { value }),
+      ...this.#channel,
+    };
+  }
+
+  #reported({ said }: ReportedError): Exchange {
+    return { kind: 'errors', answer: said, is: 'error' };
+  }
+
+  #part(section: DriverPart['section'], name?: string): DriverPart {
+    return { driver: this.#driver.name, section, ...(name === undefined ? {} : { name }) };
+  }
+
+  #about(question: string, part: DriverPart): About {
+    return { address: this.#talk.dialogue.address, question, part };
   }
 }
 
-function understood(reply: string): Answer {
-  return { received: visible(reply), verdict: 'understood', detail: '' };
+function leftOut(operation: string, message: string, reason: string): TrialResult {
+  return {
+    ...{ part: 'operation', name: operation, sent: message, seconds: 0 },
+    ...{ received: undefined, verdict: 'not-sent', detail: reason, bytes: [], exchanges: [] },
+  };
 }
 
-function measured(measurement: Measurement): string {
-  return measurement.kind === 'value' ? String(measurement.value) : measurement.kind;
+function questionOf(reading: DriverReading): string {
+  return reading.ask.at(-1)?.text ?? '';
+}
+
+function listed(entries: readonly ReportedError[]): string {
+  return entries.map(({ number, text }) => `${number} "${visible(text)}"`).join(', ');
 }

@@ -12,14 +12,14 @@ async function trialOf(
   const load = toyLoad({ ...(options.replies && { replies: options.replies }) });
   load.state.input = '1';
   const clock = new VirtualClock(new Date(0));
-  const results: TrialResult[] = [];
   const driver = { ...toyDriver, ...options.driver };
   const connection = new VirtualLine(clock, load.react);
-  for await (const result of tryDriver({ driver, connection, clock })) results.push(result);
+  const trial = await tryDriver({ driver, connection, clock });
+  const { results } = trial;
   const brief = results.map(
     ({ sent, verdict, received }) => `${sent}: ${verdict}${received ? ` ${received}` : ''}`,
   );
-  return { load, results, brief };
+  return { ...trial, load, brief };
 }
 
 describe('trying a driver', () => {
@@ -45,17 +45,18 @@ describe('trying a driver', () => {
       'FUNC CURR: understood',
       'CURR 0: understood',
       'INP OFF: understood',
+      'INP OFF: understood',
       'INP?: understood 0',
     ]);
     expect(load.state).toMatchObject({ input: '0', FUNC: 'CURR', CURR: '0', VOLT: '150' });
-    expect(load.told[0]).toBe('INP OFF');
+    expect(load.told.slice(0, 3)).toEqual(['', 'INP OFF', '*IDN?']);
     expect(load.told).not.toContain('INP ON');
   });
 
   it('says what was read, and how long it took', async () => {
     const { results } = await trialOf();
     const voltage = results.find(({ name }) => name === 'voltage');
-    expect(voltage).toMatchObject({ part: 'reading', detail: '15.1' });
+    expect(voltage).toMatchObject({ part: 'reading', detail: '15.1 V' });
     expect(voltage?.seconds).toBeCloseTo(0.01, 9);
     expect(results.at(-1)).toMatchObject({ part: 'proof', detail: 'off' });
     expect(results.find(({ verdict }) => verdict === 'not-sent')?.detail).toBe('would switch on');
@@ -90,7 +91,8 @@ describe('trying a driver', () => {
   it('ends where nobody answers, having said what makes safe before and after', async () => {
     const { brief, load } = await trialOf({ replies: { '*IDN?': undefined } });
     expect(brief).toEqual(['*IDN?: silent']);
-    expect(load.told).toEqual(['INP OFF', '*IDN?', 'INP OFF']);
+    const again = ['', 'INP OFF', '*IDN?'];
+    expect(load.told).toEqual([...again, ...again, ...again, '*IDN?', 'INP OFF']);
   });
 
   it.each([
@@ -103,7 +105,8 @@ describe('trying a driver', () => {
     expect(results[1]).toMatchObject({ part: 'proof', verdict });
     expect(results[1]?.detail).toMatch(why);
     expect(results[1]?.detail).toMatch(/; nothing more is tried: switch it off by hand$/);
-    expect(load.told).toEqual(['INP OFF', '*IDN?', 'INP?', 'INP OFF']);
+    const asked = load.told.filter((message) => message !== '*IDN?');
+    expect(asked).toEqual(['', 'INP OFF', 'INP?', ...(reply === undefined ? ['INP?'] : []), 'INP OFF']);
   });
 
   it('stops at a message that switches the input on, and makes safe at once', async () => {
@@ -115,11 +118,12 @@ describe('trying a driver', () => {
       'FUNC CURR: understood',
       'CURR 0: understood',
       'INP OFF: understood',
+      'INP OFF: understood',
       'INP?: understood 0',
     ]);
     expect(load.told.slice(load.told.indexOf('INP ON'))).toEqual([
       ...['INP ON', 'SYST:ERR?', 'INP?', 'INP OFF', 'FUNC CURR', 'SYST:ERR?', 'CURR 0', 'SYST:ERR?'],
-      ...['INP OFF', 'SYST:ERR?', 'INP?'],
+      ...['INP OFF', 'SYST:ERR?', 'INP OFF', 'SYST:ERR?', 'INP?'],
     ]);
     expect(results.at(-1)).toMatchObject({ part: 'proof', detail: 'off' });
   });
@@ -156,6 +160,7 @@ describe('trying a driver', () => {
       '*CLS: understood',
       'MEAS:VOLT?: understood 1.510000E+01',
       '*CLS: understood',
+      'INP OFF: understood',
     ]);
   });
 
@@ -164,13 +169,14 @@ describe('trying a driver', () => {
     expect(results[0]).toMatchObject({ verdict: 'unclear', received: 'NURSERY,LOAD,K1,1.0' });
   });
 
-  it('leaves the load at 0 A and off also when nobody listens any more', async () => {
+  it('leaves the load at 0 A and off also when whoever listens fails', async () => {
     const load = toyLoad();
     const clock = new VirtualClock(new Date(0));
     const connection = new VirtualLine(clock, load.react);
-    for await (const result of tryDriver({ driver: toyDriver, connection, clock })) {
-      if (result.name === 'set-voltage') break;
-    }
+    const onResult = ({ name }: TrialResult): void => {
+      if (name === 'set-voltage') throw new Error('the screen is full');
+    };
+    await expect(tryDriver({ driver: toyDriver, connection, clock, onResult })).rejects.toThrow('screen');
     expect(load.state).toMatchObject({ input: '0', FUNC: 'CURR', CURR: '0' });
     expect(load.told.slice(-2)).toEqual(['SYST:ERR?', 'INP?']);
   });
@@ -180,12 +186,97 @@ describe('trying a driver', () => {
     const clock = new VirtualClock(new Date(0));
     const connection = new VirtualLine(clock, load.react);
     const stop = new AbortController();
-    const sent: string[] = [];
-    for await (const result of tryDriver({ driver: toyDriver, connection, clock, signal: stop.signal })) {
-      sent.push(result.sent);
-      if (result.name === 'set-voltage') stop.abort();
-    }
-    expect(sent.slice(-5)).toEqual(['VOLT 150', 'FUNC CURR', 'CURR 0', 'INP OFF', 'INP?']);
+    const onResult = ({ name }: TrialResult): void => {
+      if (name === 'set-voltage') stop.abort();
+    };
+    const { signal } = stop;
+    const { results } = await tryDriver({ driver: toyDriver, connection, clock, signal, onResult });
+    const sent = results.map((result) => result.sent);
+    expect(sent.slice(-6)).toEqual(['VOLT 150', 'FUNC CURR', 'CURR 0', 'INP OFF', 'INP OFF', 'INP?']);
     expect(load.state).toMatchObject({ input: '0', FUNC: 'CURR', CURR: '0' });
+  });
+
+  it('shows every byte, ends of line included, in the order in which they went', async () => {
+    const { results } = await trialOf();
+    const bytes = results
+      .find(({ name }) => name === 'set-current')
+      ?.bytes.map((each) => `${each.kind} ${Buffer.from(each.bytes).toString('latin1')}`);
+    expect(bytes).toEqual(['sent CURR 0\n', 'sent SYST:ERR?\n', 'received 0,"No error"\n']);
+  });
+
+  it('puts it in remote before anything else, and hands it back after everything else', async () => {
+    const driver: Partial<Driver> = {
+      errors: 'none',
+      remote: [{ text: 'SYST:REM', rest: 0.2 }],
+      local: [{ text: 'SYST:LOC' }],
+    };
+    const { load, results } = await trialOf({ driver });
+    expect(load.told.slice(0, 4)).toEqual(['', 'SYST:REM', 'INP OFF', '*IDN?']);
+    expect(load.told.slice(-2)).toEqual(['INP?', 'SYST:LOC']);
+    expect(results.at(-1)).toMatchObject({ part: 'local', sent: 'SYST:LOC' });
+    expect(results.findLast(({ part }) => part === 'proof')).toMatchObject({ detail: 'off' });
+  });
+
+  it('collects what was said and answered for the dialogue of a driver file', async () => {
+    const { results } = await trialOf({ replies: { 'MEAS:CURR?': '0.0A' } });
+    const exchanges = results.flatMap((result) => result.exchanges);
+    expect(exchanges).toContainEqual({ kind: 'identity', answer: 'NURSERY,LOAD,K1,1.0', is: 'understood' });
+    expect(exchanges).toContainEqual({
+      ...{ kind: 'operation', operation: 'set-voltage', value: 150, sends: ['VOLT 150'] },
+    });
+    expect(exchanges).toContainEqual({
+      ...{ kind: 'reading', reading: 'voltage', sends: ['MEAS:VOLT?'] },
+      heard: { answer: '1.510000E+01', is: { kind: 'number', value: 15.1, dimension: 'voltage' } },
+    });
+    expect(exchanges).toContainEqual({
+      ...{ kind: 'reading', reading: 'current', sends: ['MEAS:CURR?'] },
+      heard: { answer: '0.0A', is: { kind: 'not-understood' } },
+    });
+    expect(exchanges).toContainEqual({ kind: 'errors', answer: '-113,"Undefined header"', is: 'error' });
+  });
+});
+
+describe('what switches on', () => {
+  const agreed = async (answer: boolean, replies: Record<string, string> = {}) => {
+    const load = toyLoad({ replies });
+    const clock = new VirtualClock(new Date(0));
+    const connection = new VirtualLine(clock, load.react);
+    const asked: string[] = [];
+    const { results } = await tryDriver({
+      ...{ driver: toyDriver, connection, clock },
+      agree: ({ question }) => {
+        asked.push(question);
+        return Promise.resolve(answer);
+      },
+    });
+    return { load, results, asked };
+  };
+
+  it('is tried once where somebody agrees, at 0 A, and off again, proved', async () => {
+    const { load, results, asked } = await agreed(true);
+    expect(asked).toHaveLength(1);
+    expect(asked[0]).toMatch(/set to 0 A.*nothing on its terminals/);
+    expect(load.told.filter((message) => message === 'INP ON')).toHaveLength(1);
+    const told = load.told.slice(load.told.indexOf('INP ON') - 4).filter((each) => each !== 'SYST:ERR?');
+    expect(told).toEqual([
+      ...['FUNC CURR', 'CURR 0', 'INP ON', 'INP?', 'INP OFF', 'INP OFF'],
+      ...['FUNC CURR', 'CURR 0', 'INP OFF', 'INP OFF', 'INP?'],
+    ]);
+    const on = results.findLast(({ name }) => name === 'input-state');
+    expect(on).toMatchObject({ verdict: 'understood', detail: 'yes' });
+    expect(results.at(-1)).toMatchObject({ part: 'proof', detail: 'off' });
+    expect(load.state.input).toBe('0');
+  });
+
+  it('is not sent where somebody says no', async () => {
+    const { load, asked } = await agreed(false);
+    expect(asked).toHaveLength(1);
+    expect(load.told).not.toContain('INP ON');
+  });
+
+  it('is told of when the load then says that it is off', async () => {
+    const { results } = await agreed(true, { 'INP?': '0' });
+    const on = results.findLast(({ name }) => name === 'input-state');
+    expect(on).toMatchObject({ verdict: 'refused', detail: 'it says that it is off' });
   });
 });
