@@ -237,3 +237,57 @@ describe('one mistake is one line, at its place', () => {
     ]);
   });
 });
+
+describe('the dc source of a bench', () => {
+  const place = (text: string): string => benchExample.replace('  meter:', `  source: ${text}\n  meter:`);
+  const speaks = 'driver: source-output-scpi, connection: "tcp://127.0.0.1:5026"';
+
+  it('is read with what it feeds the modules with', () => {
+    const bench = parseBench(
+      place(`{ ${speaks}, channel: 2, voltage: 24 V, current: 3 A, off-for: 30 s }`),
+      'b.yaml',
+    );
+    expect(bench.instruments.source).toEqual({
+      driver: 'source-output-scpi',
+      connection: { kind: 'tcp', host: '127.0.0.1', port: 5026 },
+      channel: 2,
+      voltage: 24,
+      current: 3,
+      offFor: 30,
+    });
+  });
+
+  it('is off for 5 s to clear a latch where the file does not say', () => {
+    const bench = parseBench(place(`{ ${speaks}, voltage: 24 V, current: 3 A }`), 'b.yaml');
+    expect(bench.instruments.source?.offFor).toBe(5);
+  });
+
+  it.each([
+    ['current: 3 A', 'instruments.source.voltage: missing'],
+    ['voltage: 24 V', 'instruments.source.current: missing'],
+    ['voltage: 0 V, current: 3 A', "instruments.source.voltage: found '0 V'; more than 0 V is needed"],
+    [
+      'voltage: 24, current: 3 A',
+      'instruments.source.voltage: found the bare number 24; a voltage needs its unit',
+    ],
+    ['voltage: 24 A, current: 3 A', "instruments.source.voltage: found '24 A', which is a current"],
+    [
+      'voltage: 24 V, current: 3 A, off-for: 0 s',
+      "instruments.source.off-for: found '0 s'; more than 0 s is needed",
+    ],
+    [
+      'voltage: 24 V, current: 3 A, off-for: 1 h',
+      "instruments.source.off-for: found '1 h'; at most 10 min is needed",
+    ],
+    ['voltage: 24 V, current: 3 A, of-for: 3 s', "did you mean 'off-for'?"],
+  ])('with %s is refused, and the place is named', (given, words) => {
+    const problems = problemsOf(() => parseBench(place(`{ ${speaks}, ${given} }`), 'b.yaml'));
+    expect(problems.join('\n')).toContain(words);
+  });
+
+  it('belongs to the instruments that a simulation may give errors', () => {
+    expect(() =>
+      parseBench(changed('modules:', 'instruments: { source: {} }\n  modules:'), 'b.yaml'),
+    ).toThrow('there is no source among the instruments of this bench');
+  });
+});

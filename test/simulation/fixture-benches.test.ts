@@ -88,6 +88,7 @@ describe('the benches that come with the project', () => {
     ['meter-query-scpi', 'query-meter'],
     ['scanner-route-scpi', 'routed-scanner'],
     ['thermometer-query-scpi', 'query-thermometer'],
+    ['source-output-scpi', 'dc-source'],
   ])('the shipped driver %s is understood by %s', async (driver, dialect) => {
     const { value } = await readDriver(driver, shelves);
     expect(dialectFor(value).name).toBe(dialect);

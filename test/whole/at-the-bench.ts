@@ -2,12 +2,25 @@ import { once } from 'node:events';
 import { readdirSync, readFileSync } from 'node:fs';
 import { connect } from 'node:net';
 import { join } from 'node:path';
+import { parse } from 'yaml';
 
 /** Asks the load itself, on a line of its own, as somebody at its front panel would look. */
-export async function askLoad(bench: string): Promise<string> {
-  const port = Number(/load:.*tcp:\/\/127\.0\.0\.1:(\d+)/.exec(readFileSync(bench, 'utf8'))?.[1]);
+export function askLoad(bench: string): Promise<string> {
+  return ask(bench, 'load', 'INP?');
+}
+
+/** The same, of the source and its output. */
+export function askSource(bench: string): Promise<string> {
+  return ask(bench, 'source', 'OUTP?');
+}
+
+async function ask(bench: string, post: string, question: string): Promise<string> {
+  const { instruments } = parse(readFileSync(bench, 'utf8')) as {
+    readonly instruments: Readonly<Record<string, { readonly connection: string }>>;
+  };
+  const port = Number(instruments[post]?.connection.split(':').at(-1));
   const socket = connect(port, '127.0.0.1');
-  socket.write('INP?\n');
+  socket.write(`${question}\n`);
   const [reply] = (await once(socket, 'data')) as [Buffer];
   socket.destroy();
   return reply.toString().trim();
