@@ -1,6 +1,7 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { parseDriver } from '../../src/files/read-driver.js';
+import { checkDialogue } from '../../src/instrument/dialogue-check.js';
 import { readChannel, readFlag, readNumber } from '../../src/instrument/reading.js';
 import { ReplyNotUnderstoodError } from '../../src/instrument/reply-errors.js';
 
@@ -33,6 +34,14 @@ describe('the shipped drivers', () => {
     for (const [name, { kind }] of Object.entries(driver.readings)) {
       if (kind === 'number') expect(driver.accuracy[name]?.fixed).toBeGreaterThan(0);
     }
+  });
+
+  it.each(files)('%s holds a dialogue by which it is tested, and passes', (file) => {
+    const driver = shipped(file);
+    expect(checkDialogue(driver)).toEqual([]);
+    const kinds = (driver.dialogue ?? []).map(({ kind }) => kind);
+    expect(kinds.filter((kind) => kind === 'reading').length).toBeGreaterThanOrEqual(2);
+    if (driver.errors !== 'none') expect(kinds).toContain('errors');
   });
 
   it.each([
