@@ -10,6 +10,7 @@ import {
   type Exchange,
   type ReadingMeaning,
 } from './driver-dialogue.js';
+import { dimensionOfValue } from './driver-dialogue-text.js';
 import { messageText } from './driver-message-schema.js';
 import { found, notAmong } from './plain-words.js';
 import { readingDimensions } from './reading-dimensions.js';
@@ -135,12 +136,6 @@ function word<W extends string>(is: string | number | undefined, words: readonly
   return known ?? z.NEVER;
 }
 
-const dimensionOf: Readonly<Record<string, Dimension>> = {
-  '{amps}': 'current',
-  '{volts}': 'voltage',
-  '{watts}': 'power',
-};
-
 function operationValue(
   operation: string,
   value: string | number | undefined,
@@ -155,7 +150,7 @@ function operationValue(
     complain(['value'], `missing; it stands for ${placeholder}`);
     return undefined;
   }
-  const dimension = dimensionOf[placeholder];
+  const dimension = dimensionOfValue(operation);
   if (dimension !== undefined) return quantityIn(value, dimension, ['value'], complain);
   if (isChannel(value)) return value;
   complain(['value'], `${found(value)}; the number of a channel is needed`);

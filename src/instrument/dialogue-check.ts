@@ -1,12 +1,13 @@
 import { placeholderOf } from '../files/driver-checks.js';
 import { driverOfChannel } from '../files/driver-channel.js';
 import type { Exchange } from '../files/driver-dialogue.js';
+import { meaningText } from '../files/driver-dialogue-text.js';
 import type { Driver } from '../files/driver.js';
 import { judgedAnswer } from './error-report.js';
 import { isIdentityFor } from './identity.js';
 import { fillMessage, type OperationValues } from './message.js';
 import { saysReady } from './ready.js';
-import { isSameMeaning, meaningOf, meaningText } from './reading-meaning.js';
+import { isSameMeaning, meaningOf } from './reading-meaning.js';
 import type { About } from './reading.js';
 import { ReplyNotUnderstoodError } from './reply-errors.js';
 import { visible } from './visible.js';

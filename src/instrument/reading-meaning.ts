@@ -1,6 +1,6 @@
 import type { DriverReading } from '../files/driver.js';
 import type { ReadingMeaning } from '../files/driver-dialogue.js';
-import { formatQuantity } from '../quantity/format-quantity.js';
+import { meaningText } from '../files/driver-dialogue-text.js';
 import { readChannel, readFlag, readNumber, type About } from './reading.js';
 
 /**
@@ -19,22 +19,6 @@ export function meaningOf(reply: string, reading: DriverReading, about: About): 
         ? { kind: 'number', value: measured.value, dimension: reading.dimension }
         : measured;
     }
-  }
-}
-
-/** As the `dialogue` of a driver file writes it: `15.21 V`, `yes`, `overload`. */
-export function meaningText(meaning: ReadingMeaning): string {
-  switch (meaning.kind) {
-    case 'number':
-      return formatQuantity(meaning.value, meaning.dimension);
-    case 'flag':
-      return meaning.value ? 'yes' : 'no';
-    case 'channel':
-      return String(meaning.value ?? 'none');
-    case 'overload':
-    case 'not-a-number':
-    case 'not-understood':
-      return meaning.kind;
   }
 }
 

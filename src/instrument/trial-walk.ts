@@ -1,5 +1,6 @@
 import type { Driver, DriverReading, Message, Wire } from '../files/driver.js';
 import type { Exchange } from '../files/driver-dialogue.js';
+import { meaningText } from '../files/driver-dialogue-text.js';
 import { placeholderOf } from '../files/driver-checks.js';
 import type { DriverPart } from './driver-part.js';
 import { readErrors, type ReportedError } from './error-report.js';
@@ -7,7 +8,7 @@ import { harmlessValues, whyLeftOut } from './harmless.js';
 import { isIdentityFor } from './identity.js';
 import { tellMakeSafe } from './make-safe.js';
 import { fillMessage } from './message.js';
-import { meaningOf, meaningText } from './reading-meaning.js';
+import { meaningOf } from './reading-meaning.js';
 import { readFlag, type About } from './reading.js';
 import { InstrumentSilentError, ReplyNotUnderstoodError } from './reply-errors.js';
 import { ask, type Talk, tell } from './tell.js';
