@@ -222,11 +222,16 @@ describe('drivers', () => {
   it('lists what is shipped', async () => {
     const { stdout } = await railproof('drivers');
     expect(stdout.split('\n').map((line) => line.split(/ {2,}/)[0])).toEqual([
+      'load-channel-scpi',
       'load-input-scpi',
+      'load-remote-scpi',
       'load-short-scpi',
+      'load-source-scpi',
+      'meter-function-scpi',
       'meter-query-scpi',
       'meter-read-scpi',
       'scanner-route-scpi',
+      'source-output-scpi',
       'thermometer-query-scpi',
       '',
     ]);

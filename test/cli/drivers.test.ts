@@ -73,7 +73,7 @@ describe('drivers', () => {
     expect(stdout).toMatch(/^scanner-route-scpi +scanner +Scanners that close one channel/m);
     expect(stdout).toMatch(/^thermometer-query-scpi +thermometer +Thermometers that measure/m);
     const { drivers } = JSON.parse((await railproof('drivers', '--json')).stdout) as { drivers: unknown[] };
-    expect(drivers).toHaveLength(6);
+    expect(drivers).toHaveLength(11);
   });
 });
 
