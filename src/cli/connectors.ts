@@ -13,7 +13,8 @@ export function connectors(clock: Clock, simulation?: OpenedSimulation): Connect
         address,
         within === undefined ? {} : { connecting: within },
       ),
-    serial: async (address) => (await import('../instrument/serial-connection.js')).openSerial(address),
+    serial: async (address, driver) =>
+      (await import('../instrument/serial-connection.js')).openSerial(address, driver.wire.serial),
     replay: async (address) => {
       const { replays } = await import('../instrument/replay-connection.js');
       replay ??= replays(clock);

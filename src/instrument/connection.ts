@@ -1,4 +1,5 @@
 import type { Seconds } from '../quantity/quantity.js';
+import type { Notice } from './notice.js';
 
 /**
  * Bytes to and from one instrument; the seam between the tool and the world. Everything above it is the
@@ -7,6 +8,8 @@ import type { Seconds } from '../quantity/quantity.js';
 export interface Connection {
   /** As the bench file writes it: `tcp://127.0.0.1:5025`. */
   readonly address: string;
+  /** What came out otherwise than was asked for when it was opened; for whoever opened it to tell. */
+  readonly remark?: Notice | undefined;
   /** @throws ConnectionLostError */
   write(bytes: Uint8Array): Promise<void>;
   /**

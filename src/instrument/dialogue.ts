@@ -79,6 +79,8 @@ export class Dialogue {
     this.#identify = parts.identify;
     this.#isIdentity = parts.isIdentity ?? ((reply) => reply.trim() !== '');
     this.#onNotice = parts.onNotice;
+    const { remark } = parts.connection;
+    if (remark !== undefined) this.#notice(remark);
   }
 
   get address(): string {

@@ -8,6 +8,7 @@ export type Notice =
   | { readonly kind: 'out-of-step'; readonly question: string }
   | { readonly kind: 'late-reply'; readonly shown: string }
   | { readonly kind: 'missing'; readonly what: Missing }
+  | { readonly kind: 'no-control-lines'; readonly asked: string; readonly reason: string }
   | { readonly kind: 'in-step-again' }
   | { readonly kind: 'stale-error'; readonly entry: ScpiError }
   | { readonly kind: 'harmless-error'; readonly entry: ScpiError }
@@ -26,6 +27,8 @@ export function noticeText(address: string, notice: Notice): string {
       return `${address} sent "${notice.shown}" too late; it is thrown away`;
     case 'missing':
       return `${address} did not ${missingWords[notice.what]}, as its driver says it does; before the next question it must get back in step`;
+    case 'no-control-lines':
+      return `${address} has no control lines to set (${notice.asked}: ${notice.reason}); an instrument that waits for them will not answer`;
     case 'in-step-again':
       return `${address} is in step again`;
     case 'stale-error':

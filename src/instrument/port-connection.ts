@@ -3,12 +3,16 @@ import type { Seconds } from '../quantity/quantity.js';
 import { ConnectionLostError } from './connection-errors.js';
 import type { Connection } from './connection.js';
 import { Incoming } from './incoming.js';
+import type { Notice } from './notice.js';
 
 /** A port of this machine that is open, and how it is closed. */
 export interface OpenPort {
   /** As the bench file writes it. */
   readonly address: string;
   readonly stream: Duplex;
+  /** How long a byte is on its way out once the port has taken it. */
+  readonly perByte?: Seconds;
+  readonly remark?: Notice | undefined;
   /** How long it may take nothing of what is written. */
   readonly writing: Seconds;
   /** What it means when the port closes of itself. */
@@ -25,12 +29,14 @@ const goodbye: Seconds = 0.25;
 /** What every port that pushes bytes at us has in common. */
 export class PortConnection implements Connection {
   readonly address: string;
+  readonly remark: Notice | undefined;
   readonly #port: OpenPort;
   readonly #incoming: Incoming;
   #closed: Promise<void> | undefined;
 
   constructor(port: OpenPort) {
     this.address = port.address;
+    this.remark = port.remark;
     this.#port = port;
     this.#incoming = new Incoming(port.stream);
     port.stream.on('data', (bytes: Uint8Array) => {
@@ -56,7 +62,7 @@ export class PortConnection implements Connection {
       this.#port.stream.write(bytes, (error) => {
         clearTimeout(timer);
         if (error) reject(this.#lost(error.message, error));
-        else resolve();
+        else this.#untilOut(bytes.length, resolve);
       });
     });
   }
@@ -68,6 +74,13 @@ export class PortConnection implements Connection {
   close(): Promise<void> {
     this.#closed ??= this.#sayGoodbye();
     return this.#closed;
+  }
+
+  /** A port takes bytes faster than it sends them, and pauses count from when they are out. */
+  #untilOut(count: number, done: () => void): void {
+    const { perByte } = this.#port;
+    if (perByte === undefined) done();
+    else setTimeout(done, perByte * count * 1000);
   }
 
   #sayGoodbye(): Promise<void> {

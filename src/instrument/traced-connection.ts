@@ -37,6 +37,7 @@ export function tracedConnection(connection: Connection, clock: EventClock, trac
 /** Notes what goes over a connection, and moves the clock to when it did. */
 class TracedConnection implements Connection {
   readonly address: string;
+  readonly remark: Connection['remark'];
   readonly #connection: Connection;
   readonly #clock: EventClock;
   readonly #trace: Trace;
@@ -47,6 +48,7 @@ class TracedConnection implements Connection {
 
   constructor(connection: Connection, clock: EventClock, trace: Trace) {
     this.address = connection.address;
+    this.remark = connection.remark;
     this.#connection = connection;
     this.#clock = clock;
     this.#trace = trace;
