@@ -99,6 +99,57 @@ describe.each(familyNames)('the shipped family %s', (name) => {
   });
 });
 
+describe('an instrument that is told what it cannot do', () => {
+  it.each([
+    ['set-current', 'CURR {amps}E6', -222],
+    ['set-current', 'CURR {amps} V', -131],
+    ['set-current', 'CURR MUCH', -224],
+    ['set-current', 'CURR "{amps}"', -104],
+    ['set-current', 'CURR', -109],
+    ['set-current', 'CURRE {amps}', -113],
+    ['set-current', 'CURR{amps}', -111],
+    ['input-on', 'INP MAYBE', -224],
+    ['input-on', 'INP1 ON', -113],
+    ['input-on', 'INP ON 1', -103],
+    ['current-mode', 'FUNC CURR;;INP ON', -102],
+  ])('%s by %s says so with the number of the standard', async (operation, text, number) => {
+    const made = family('load-input-scpi');
+    const operations = { ...made.driver.operations, [operation]: [{ text }] };
+    const { opened: load } = await opened('load-input-scpi', undefined, {
+      ...made,
+      driver: { ...made.driver, operations },
+    });
+    await expect(load.perform(operation, someValues)).rejects.toMatchObject({
+      code: 'INSTRUMENT_COMPLAINED',
+      entries: [{ number }],
+    });
+    expect(await load.flag('input-state')).toBe(false);
+    expect(made.instrument.errors.isEmpty).toBe(true);
+  });
+
+  it('refuses everything until it is in remote, where it must be put there first', async () => {
+    const made = family('load-remote-scpi');
+    const { opened: load } = await opened('load-remote-scpi', undefined, {
+      ...made,
+      driver: { ...made.driver, remote: [] },
+    });
+    await expect(load.perform('input-on')).rejects.toMatchObject({ entries: [{ number: -221 }] });
+    expect(made.has('input-on')).toBe(false);
+    await (await opened('load-remote-scpi', undefined, made)).opened.perform('input-on');
+    expect(made.has('input-on')).toBe(true);
+  });
+
+  it('is told on the channel that the bench names, whichever is selected at its panel meanwhile', async () => {
+    const made = await opened('load-channel-scpi');
+    await made.opened.perform('set-current', someValues);
+    made.instrument.write('INST:NSEL 3');
+    await made.opened.perform('input-on');
+    expect([made.has('set-current'), made.has('input-on')]).toEqual([someValues.amps, true]);
+    made.instrument.write('INST:NSEL 3;:INP?');
+    expect(made.instrument.read()?.text).toBe('+0');
+  });
+});
+
 /** What each operation leaves behind, in the words of whoever's body it is. */
 const dueAfter: Readonly<Record<string, readonly unknown[]>> = {
   'make-safe': [false, 'VOLTage[:DC]', []],
