@@ -137,6 +137,72 @@ describe('safe that cannot be confirmed says as its last words what to do by han
   });
 });
 
+describe('safe, on a bench with a source,', () => {
+  /** The same bench, and a source at that address. */
+  function withSource(bench: string, address: string): void {
+    const source = `  source: { driver: source-output-scpi, connection: '${address}', voltage: 24 V, current: 4 A }\n`;
+    writeFileSync(bench, readFileSync(bench, 'utf8').replace('instruments:\n', `instruments:\n${source}`));
+  }
+
+  /** A source on a socket of its own, which is on. */
+  async function sourceAtSocket(heard: string[]): Promise<{ address: string; state: { output: string } }> {
+    const state = { output: '1' };
+    const { port } = await serveTcp((message, line) => {
+      heard.push(message);
+      if (message === 'OUTP OFF') state.output = '0';
+      const answers: Readonly<Record<string, string>> = {
+        '*IDN?': 'NURSERY,SOURCE,K1,1.0',
+        'SYST:ERR?': '0,"No error"',
+        'OUTP?': state.output,
+      };
+      const answer = answers[message];
+      if (answer !== undefined) line.say(`${answer}\n`);
+    });
+    return { address: `tcp://127.0.0.1:${port}`, state };
+  }
+
+  it('switches the load off and then the source, and reads both back', async () => {
+    const order: string[] = [];
+    const load = await loadAtSocket((message) => {
+      order.push(message);
+      return undefined;
+    });
+    const source = await sourceAtSocket(order);
+    withSource(load.bench, source.address);
+    const { status, stdout, stderr } = await railproof('safe', '--bench', load.bench);
+    expect(stdout).toBe(
+      `The load at ${load.address} is off; it was read back.\nThe source at ${source.address} is off; it was read back.\n`,
+    );
+    expect(stderr).toBe('');
+    expect(status).toBe(0);
+    expect(source.state.output).toBe('0');
+    expect(order.indexOf('INP?')).toBeLessThan(order.indexOf('OUTP OFF'));
+  });
+
+  it('says of a source that cannot be reached what to do by hand, and that the load is off', async () => {
+    const load = await loadAtSocket();
+    withSource(load.bench, `tcp://127.0.0.1:${await freePort()}`);
+    const { status, stdout, stderr } = await railproof('safe', '--bench', load.bench);
+    expect(stdout).toBe(`The load at ${load.address} is off; it was read back.\n`);
+    expect(stderr).toMatch(
+      /^It could not be confirmed that the source is off: .*nothing listens on this port/,
+    );
+    expect(lastLine(stderr)).toMatch(/^THE SOURCE MAY STILL BE ON\. /);
+    expect(status).toBe(69);
+  });
+
+  it('switches the source off though the load does not answer, and the last words are of the load', async () => {
+    const load = await loadAtSocket((message) => (message.endsWith('?') ? 'ignore' : undefined));
+    const source = await sourceAtSocket([]);
+    withSource(load.bench, source.address);
+    const { status, stdout, stderr } = await railproof('safe', '--bench', load.bench);
+    expect(stdout).toBe(`The source at ${source.address} is off; it was read back.\n`);
+    expect(source.state.output).toBe('0');
+    expect(lastLine(stderr)).toBe(mayBeOn);
+    expect(status).toBe(69);
+  });
+});
+
 async function freePort(): Promise<number> {
   const server = createServer().listen(0, '127.0.0.1');
   await once(server, 'listening');
