@@ -1,5 +1,7 @@
 import { expect, it } from 'vitest';
 import { orderText, readOrder } from '../../src/bench/watchman-order.js';
+import { driverOfChannel } from '../../src/files/driver-channel.js';
+import type { Driver } from '../../src/files/driver.js';
 import { nursery } from './nursery-bench.js';
 
 it('an order is one line, and comes back with all that makes a load safe', async () => {
@@ -22,4 +24,20 @@ it('an order is one line, and comes back with all that makes a load safe', async
     false,
   ]);
   expect(driver.errors.clear.finds('+0,"No error"')).toBe(true);
+});
+
+it('an order holds the driver of the one channel, and what puts it in remote', async () => {
+  const { description, drivers } = await nursery();
+  const load: Driver = driverOfChannel(
+    {
+      ...drivers.load,
+      remote: [{ text: 'SYST:REM', rest: 0.05 }],
+      channels: { select: [{ text: 'INST:NSEL {channel}' }], first: 1, last: 4 },
+    },
+    2,
+  );
+  const { driver } = readOrder(orderText({ folder: '/runs/K1', bench: description, driver: load }));
+  expect(driver).toEqual(load);
+  expect(driver.remote).toEqual([{ text: 'SYST:REM', rest: 0.05 }]);
+  expect(driver.operations['make-safe']?.[0]?.text).toBe('INST:NSEL 2');
 });
