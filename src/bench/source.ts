@@ -3,7 +3,7 @@ import type { SourcePlace } from '../files/bench.js';
 import type { Instrument } from '../instrument/instrument.js';
 import type { Session } from '../instrument/session.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Ratio } from '../quantity/quantity.js';
+import type { Ratio, Seconds } from '../quantity/quantity.js';
 import { DisobeyedError, SourceSagsError, SourceWentOffError } from './bench-error.js';
 
 /** What a bench file asks of its source. */
@@ -11,6 +11,9 @@ export type Feed = Pick<SourcePlace, 'voltage' | 'current' | 'offFor'>;
 
 /** Of the voltage that it was told, what a source in good order gives at least. */
 const leastOfVoltage: Ratio = 0.95;
+/** A module that starts draws more for a moment; so many looks in a row tell that it does not pass. */
+const looks = 3;
+const betweenLooks: Seconds = 0.1;
 
 const switchOffByHand = 'switch it off by hand, or unplug the module from it';
 
@@ -78,9 +81,12 @@ export class Source {
     if (this.#output !== 'on') return;
     if (!(await this.isOn())) throw new SourceWentOffError(this.address);
     if (!this.instrument.reads('voltage')) return;
-    const read = await this.instrument.read('voltage');
-    if (read.kind === 'value' && read.value < leastOfVoltage * this.feed.voltage) {
-      throw new SourceSagsError(this.address, { gives: read.value, told: this.feed.voltage });
+    for (let look = 1; ; look += 1) {
+      const read = await this.instrument.read('voltage');
+      if (read.kind !== 'value' || read.value >= leastOfVoltage * this.feed.voltage) return;
+      if (look === looks)
+        throw new SourceSagsError(this.address, { gives: read.value, told: this.feed.voltage });
+      await this.#clock.sleep(betweenLooks);
     }
   }
 

@@ -140,6 +140,19 @@ describe('a source that does not feed the module as it was told ends the run', (
     });
   });
 
+  it('but not when it sags for a moment only, as when a module starts', async () => {
+    const { source, world, clock, simulation } = await feeding();
+    world.setSource({ setVoltage: 18 }, clock.now() - simulation.began);
+    const before = clock.now();
+    const confirmed = source.confirm();
+    while (clock.now() < before + 0.1) await Promise.resolve();
+    world.setSource({ setVoltage: 24 }, clock.now() - simulation.began);
+    await confirmed;
+    expect(clock.now() - before).toBeGreaterThan(0.1);
+    world.setSource({ setVoltage: 18 }, clock.now() - simulation.began);
+    await expect(source.confirm()).rejects.toMatchObject({ code: 'SOURCE_SAGS' });
+  });
+
   it('but for one that was not asked to feed anything', async () => {
     const { source } = await opened();
     await expect(source.confirm()).resolves.toBeUndefined();
