@@ -15,6 +15,10 @@ export interface TcpPatience {
   readonly writing: Seconds;
 }
 
+const whenRefused =
+  'Is it switched on, is its remote control enabled, and is the port in the bench file right? ' +
+  'Is another program connected? some instruments serve only one program at a time.';
+
 /**
  * Opens a raw socket to an instrument.
  * @throws InstrumentUnreachableError when nobody is there, it refuses, or does not accept in time.
@@ -26,13 +30,14 @@ export function openTcp(
   const name = formatAddress(address);
   return new Promise((resolve, reject) => {
     const socket = connect({ host: address.host, port: address.port, noDelay: true, keepAlive: true });
-    const fail = (reason: string, cause?: unknown): void => {
+    const fail = (reason: string, facts: { advice?: string; cause?: unknown } = {}): void => {
       clearTimeout(timer);
       socket.destroy();
-      reject(new InstrumentUnreachableError({ address: name, reason, cause }));
+      reject(new InstrumentUnreachableError({ address: name, reason, ...facts }));
     };
     const refused = (error: NodeJS.ErrnoException): void => {
-      fail(whyNot(error, address.host), error);
+      const advice = error.code === 'ECONNREFUSED' ? { advice: whenRefused } : {};
+      fail(whyNot(error, address.host), { ...advice, cause: error });
     };
     const timer = setTimeout(() => {
       fail(`no connection within ${Number(connecting.toFixed(1))} s`);

@@ -11,12 +11,14 @@ import type { QuirkyInstrument } from './quirky-instrument.js';
 /** How many programs it serves at a time; one too many is hung up on. */
 export interface Serving {
   readonly clients?: number;
+  /** It stops listening as soon as somebody is connected. */
+  readonly deafToOthers?: boolean;
 }
 
 /** Serves an instrument on a loopback port of its own until the test is over. */
 export async function serveQuirkyTcp(
   instrument: QuirkyInstrument,
-  { clients = Infinity }: Serving = {},
+  { clients = Infinity, deafToOthers = false }: Serving = {},
 ): Promise<Extract<ConnectionAddress, { kind: 'tcp' }>> {
   let connected = 0;
   const server = createServer({ noDelay: true }, (socket) => {
@@ -27,6 +29,7 @@ export async function serveQuirkyTcp(
       return;
     }
     connected += 1;
+    if (deafToOthers) server.close();
     const hear = instrument.connect({
       say: (bytes) => {
         if (socket.writable) socket.write(bytes);
