@@ -1,4 +1,3 @@
-import { dimensionWords } from '../quantity/dimension-words.js';
 import { shown } from '../quantity/shown-text.js';
 import {
   operationsOf,
@@ -13,11 +12,11 @@ import {
 import { dialogueProblems } from './driver-dialogue-checks.js';
 import type { Exchange } from './driver-dialogue.js';
 import { didYouMean } from '../quantity/nearest.js';
-import { readingDimensions } from './reading-dimensions.js';
+import { readingProblems } from './driver-reading-checks.js';
 import type { Complaint } from './yaml-document.js';
 
 /** The parts of a driver file whose rules depend on each other. */
-interface DriverFile {
+export interface DriverFile {
   readonly role: Role;
   readonly identify: string;
   readonly errors: 'none' | ErrorReport;
@@ -59,10 +58,10 @@ export function driverProblems(driver: DriverFile): Complaint[] {
     ...silentOperations(driver),
     ...operationPlaceholders(driver),
     ...strayPlaceholders(driver),
-    ...readingKinds(driver),
-    ...accuracyWithoutReading(driver),
+    ...readingProblems(driver),
     ...channelProblems(driver),
     ...neverReady(driver),
+    ...waitedForUnasked(driver),
     ...dialogueProblems(driver),
   ];
 }
@@ -113,7 +112,7 @@ function* operationPlaceholders(driver: DriverFile): Generator<Complaint> {
 function* strayPlaceholders(driver: DriverFile): Generator<Complaint> {
   const asked = (path: string[], ask: string | undefined): [PropertyKey[], string][] =>
     ask === undefined ? [] : [[path, ask]];
-  const listed = (path: string[], messages: readonly Message[]): [PropertyKey[], string][] =>
+  const listed = (path: PropertyKey[], messages: readonly Message[]): [PropertyKey[], string][] =>
     messages.map(({ text }, index) => [[...path, index], text]);
   const ofNoChannel = [
     ...asked(['identify'], driver.identify),
@@ -121,6 +120,7 @@ function* strayPlaceholders(driver: DriverFile): Generator<Complaint> {
     ...asked(['ready', 'ask'], driver.ready?.ask),
     ...listed(['remote'], driver.remote),
     ...listed(['local'], driver.local),
+    ...listed(['errors', 'afterwards'], afterwardsOf(driver)),
   ];
   const ofAChannel = [
     ...listed(['channels', 'select'], driver.channels?.select ?? []),
@@ -129,6 +129,7 @@ function* strayPlaceholders(driver: DriverFile): Generator<Complaint> {
     ...Object.entries(driver.readings).flatMap(([reading, { ask }]) =>
       ask.flatMap(({ text }) => asked(['readings', reading, 'ask'], text)),
     ),
+    ...rangeSelections(driver).flatMap(([path, messages]) => listed(path, messages)),
   ];
   for (const [path, text] of ofNoChannel) {
     for (const each of placeholdersIn(text)) yield { path, message: stray(each, undefined) };
@@ -158,7 +159,8 @@ function* neverReady(driver: DriverFile): Generator<Complaint> {
     [['remote'], driver.remote],
     [['prepare'], driver.prepare],
     [['release'], driver.release],
-    [['local'], driver.local],
+    [['channels', 'select'], driver.channels?.select ?? []],
+    ...rangeSelections(driver),
     ...Object.entries(driver.operations).map(([name, messages]): [PropertyKey[], readonly Message[]] => [
       ['operations', name],
       messages,
@@ -174,41 +176,36 @@ function* neverReady(driver: DriverFile): Generator<Complaint> {
   }
 }
 
-/** The key that makes a reading of each kind, and what such a reading is. */
-const kinds: Readonly<Record<DriverReading['kind'], { readonly key: string; readonly is: string }>> = {
-  number: { key: "'unit'", is: 'a number' },
-  flag: { key: "'true-when'", is: 'a yes or a no' },
-  channel: { key: "'channel-in'", is: "a channel's number" },
-};
-
-function* readingKinds({ readings }: DriverFile): Generator<Complaint> {
-  for (const [name, reading] of Object.entries(readings)) {
-    // What is no reading at all has been told already.
-    if (!Object.hasOwn(kinds, reading.kind)) continue;
-    const path = ['readings', name];
-    const due = kindOf(name);
-    if (due !== undefined && reading.kind !== due) {
-      const told = name.startsWith('measures-') ? name : `the ${name}`;
-      const give = due === 'number' ? `its ${kinds[due].key}` : kinds[due].key;
+/** After these nothing is asked, so nothing can be waited for. */
+function* waitedForUnasked(driver: DriverFile): Generator<Complaint> {
+  const lists: [PropertyKey[], readonly Message[]][] = [
+    [['local'], driver.local],
+    [['errors', 'afterwards'], afterwardsOf(driver)],
+  ];
+  for (const [path, messages] of lists) {
+    for (const [index, { untilReady }] of messages.entries()) {
+      if (untilReady !== true) continue;
       yield {
-        path,
-        message: `${told} is ${kinds[due].is}; give ${give} in place of ${kinds[reading.kind].key}`,
+        path: [...path, index],
+        message: "nothing is asked here; give it a 'rest' in place of 'until'",
       };
-      continue;
-    }
-    const dimension = isNumber(name) ? readingDimensions[name] : undefined;
-    if (dimension !== undefined && reading.kind === 'number' && reading.dimension !== dimension) {
-      const message = `the unit is that of ${dimensionWords[reading.dimension].name}; this reading is ${dimensionWords[dimension].name}`;
-      yield { path: [...path, 'unit'], message };
     }
   }
 }
 
-function* accuracyWithoutReading({ accuracy, readings }: DriverFile): Generator<Complaint> {
-  for (const name of Object.keys(accuracy)) {
-    if (Object.hasOwn(readings, name)) continue;
-    yield { path: ['accuracy', name], message: `this driver has no reading '${name}'` };
-  }
+function afterwardsOf({ errors }: DriverFile): readonly Message[] {
+  return errors === 'none' ? [] : errors.afterwards;
+}
+
+function rangeSelections({ readings }: DriverFile): [PropertyKey[], readonly Message[]][] {
+  return Object.entries(readings).flatMap(([name, reading]) =>
+    reading.kind !== 'number' || reading.ranges === undefined
+      ? []
+      : reading.ranges.map(({ select }, index): [PropertyKey[], readonly Message[]] => [
+          ['readings', name, 'ranges', index, 'select'],
+          select,
+        ]),
+  );
 }
 
 function placeholdersIn(message: string): string[] {
@@ -221,14 +218,4 @@ function stray(placeholder: string, due: string | undefined): string {
       ? '; none is filled in here'
       : didYouMean(placeholder, [due]) || `; ${due} is known here`;
   return `unknown placeholder ${shown(placeholder)}${hint}`;
-}
-
-function kindOf(name: string): DriverReading['kind'] | undefined {
-  if (isNumber(name)) return 'number';
-  if (name.endsWith('-state') || name.startsWith('measures-')) return 'flag';
-  return name === 'closed-channel' ? 'channel' : undefined;
-}
-
-function isNumber(name: string): name is keyof typeof readingDimensions {
-  return Object.hasOwn(readingDimensions, name);
 }

@@ -67,22 +67,13 @@ export async function tellAndCheck(
   if (messages.length === 0) return;
   for (const pause of [...pausesBeforeAgain, undefined]) {
     await tell(talk, messages, part);
-    const { entries } = await readErrors(talk.dialogue, talk.driver);
-    const fates = entries.map((entry) => ({ entry, fate: fateIn(talk.driver, entry) }));
-    const serious = fates.filter(({ fate }) => fate !== 'harmless');
-    for (const { entry, fate } of fates)
-      if (fate === 'harmless') notice(talk, { kind: 'harmless-error', entry });
-    if (serious.length === 0) return;
-    if (pause === undefined || serious.some(({ fate }) => fate === 'error')) {
+    const errors = await seriousErrors(talk);
+    if (errors.length === 0) return;
+    if (pause === undefined || !errors.every((error) => fateIn(talk.driver, error) === 'again')) {
       await tellAfterwards(talk);
-      throw complaint(
-        talk,
-        serious.map(({ entry }) => entry),
-        messages,
-        part,
-      );
+      throw complaint(talk, errors, messages, part);
     }
-    for (const { entry } of serious) notice(talk, { kind: 'told-again', entry });
+    for (const entry of errors) notice(talk, { kind: 'told-again', entry });
     await talk.clock.sleep(pause);
   }
 }
@@ -95,6 +86,16 @@ export async function clearErrors(talk: Talk): Promise<void> {
   const { entries, clear } = await readErrors(talk.dialogue, talk.driver);
   for (const entry of entries) notice(talk, { kind: 'stale-error', entry });
   if (!clear) throw complaint(talk, entries, [], { driver: talk.driver.name, section: 'errors' });
+}
+
+/** What it complains of, but for what its driver calls harmless. */
+async function seriousErrors(talk: Talk): Promise<readonly ReportedError[]> {
+  const { entries } = await readErrors(talk.dialogue, talk.driver);
+  return entries.filter((entry) => {
+    if (fateIn(talk.driver, entry) !== 'harmless') return true;
+    notice(talk, { kind: 'harmless-error', entry });
+    return false;
+  });
 }
 
 function fateIn({ errors }: Driver, entry: ReportedError): Fate {

@@ -138,6 +138,26 @@ describe('one mistake is one line, at its place', () => {
       '{ sent: "MEAS:VOLT?" }',
       "20:21: readings.voltage.ask: unknown key 'sent'; did you mean 'send'?",
     ],
+    [
+      'unit: V ',
+      'unit: V, ranges: [{ up-to: 20 V, select: ["RANG {channel}"] }] ',
+      "20:75: readings.voltage.ranges.0.select.0: unknown placeholder '{channel}'; none is filled in here",
+    ],
+    [
+      errorQueue,
+      '{ ask: "SYST:ERR?", clear: "^0", afterwards: ["*CLS {channel}"] }',
+      "7:55: errors.afterwards.0: unknown placeholder '{channel}'; none is filled in here",
+    ],
+    [
+      'release: []',
+      'ready: { ask: "*OPC?", when: "^1$" }\nlocal: [{ send: "SYST:LOC", until: ready }]\nrelease: []',
+      "10:9: local.0: nothing is asked here; give it a 'rest' in place of 'until'",
+    ],
+    [
+      'unit: V ',
+      'unit: V, ranges: [{ up-to: 20 V, select: [{ send: "RANG 20", until: ready }] }] ',
+      "20:74: readings.voltage.ranges.0.select: 'until: ready' needs a 'ready' in this file, which says how it is asked for",
+    ],
     ['"MEAS:VOLT?"', '[]', '20:19: readings.voltage.ask: found 0 of them; at least 1 are needed'],
     [
       'unit: V ',
