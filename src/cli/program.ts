@@ -1,6 +1,7 @@
 import { Command, CommanderError, Option } from 'commander';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { printableLines } from '../quantity/printable.js';
+import type { DriversOptions } from './drivers.js';
 import { errorText } from './error-text.js';
 import { packageFacts } from './package-facts.js';
 import type { RunOptions } from './run-wanted.js';
@@ -108,16 +109,25 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
 
   command(
     'drivers',
-    'the shipped instrument drivers; --try walks through one against an instrument, input kept off',
+    'the shipped instrument drivers; --match finds the one for an instrument, --try walks through one, input kept off',
     'railproof drivers --try load-input-scpi --connection replay:fixtures/dialogues/load-input-scpi.jsonl',
   )
+    .option(
+      '--match <address>',
+      'which shipped driver fits the instrument at this address; asks only what does no harm',
+    )
     .option('--try <driver>', 'a shipped driver by its name, or a file')
     .option(
       '--connection <address>',
       'where the instrument is: tcp://host:port, serial:path?baud=9600 or replay:file',
     )
+    .option('--channel <number>', 'of an instrument with several; the lowest when left out')
+    .option(
+      '--write <name>',
+      'keep what came of it: <name>.yaml, the driver adapted to this instrument, and <name>.jsonl, every byte, which replay: plays',
+    )
     .addOption(json())
-    .action(async (options: { try?: string; connection?: string; json?: boolean }) => {
+    .action(async (options: DriversOptions) => {
       const { drivers } = await import('./drivers.js');
       done(await drivers(options, streams));
     });

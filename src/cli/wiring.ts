@@ -26,6 +26,9 @@ export const shipped = {
   tolerances: fileURLToPath(new URL('procedures/tolerances/', packageFolder)),
 };
 
+/** Where a driver that is named on the command line is sought. */
+export const shelves = { relativeTo: '.', shipped: shipped.drivers };
+
 /** As a record names a file: those that come with the program by their place in it, wherever that is. */
 export function recordedPath(path: string): string {
   const root = fileURLToPath(packageFolder);

@@ -29,6 +29,8 @@ export class TrialWalk {
   readonly #line: TrialLine;
   /** The channel that the exchanges are of, where the driver has several. */
   readonly #channel: { readonly channel?: number };
+  /** What a meter was told last to measure. */
+  #measures: string | undefined;
   #talk: Talk;
 
   constructor(line: TrialLine, wire: Wire, channel: number | undefined) {
@@ -54,7 +56,10 @@ export class TrialWalk {
     yield* this.#listed('remote', remote);
     yield* this.#listed('prepare', prepare);
     for (const operation of Object.keys(operations)) yield* this.operation(operation);
-    for (const [name, reading] of Object.entries(readings)) yield* this.#reading(name, reading);
+    for (const [name, reading] of Object.entries(readings)) {
+      yield* this.#measuring(name);
+      yield* this.#reading(name, reading);
+    }
   }
 
   async *ending(): AsyncGenerator<TrialResult, void, undefined> {
@@ -106,6 +111,7 @@ export class TrialWalk {
   /** The messages of an operation, with values that do no harm. */
   async *operation(operation: string): AsyncGenerator<TrialResult, void, undefined> {
     const messages = this.#driver.operations[operation] ?? [];
+    if (operation.startsWith('measure-')) this.#measures = operation;
     const reason = whyLeftOut(operation, this.#driver);
     if (reason !== undefined) {
       for (const { text } of messages) yield leftOut(operation, text, reason);
@@ -188,6 +194,13 @@ export class TrialWalk {
       const exchanges = entries.map((entry) => this.#reported(entry));
       return { received: listed(entries), verdict: 'refused', detail: 'in its error queue', exchanges };
     });
+  }
+
+  /** A meter reads what it was told to measure, whatever it is asked. */
+  async *#measuring(reading: string): AsyncGenerator<TrialResult, void, undefined> {
+    const operation = `measure-${reading.replace(/^measures-/, '')}`;
+    if (operation === this.#measures || this.#driver.operations[operation] === undefined) return;
+    yield* this.operation(operation);
   }
 
   async *#reading(name: string, reading: DriverReading): AsyncGenerator<TrialResult, void, undefined> {
