@@ -1,4 +1,4 @@
-import { closeSync, openSync, rmSync, writeFileSync, writeSync } from 'node:fs';
+import { closeSync, openSync, rmSync, statfsSync, writeFileSync, writeSync } from 'node:fs';
 import { join } from 'node:path';
 import { dialogueHeader, dialogueLine } from '../instrument/dialogue-record.js';
 import type { TraceOf } from '../instrument/traced-connection.js';
@@ -7,6 +7,10 @@ import { answerLine, answersHeader, type RecordedAnswer } from '../run/answers-r
 const answersFile = 'operator.jsonl';
 /** Until there is a folder: what an instrument says while the bench is opened is a few hundred bytes. */
 const mostHeld = 16 * 1024 * 1024;
+/** Left free for the journal: on a full disk it is not for the trace to have the last of the room. */
+const leftFree = 4 * 1024 * 1024;
+/** So much is written before the room is looked at again. */
+const lookEvery = 64 * 1024;
 
 /**
  * The trace of one run: `<post>.jsonl` for each instrument and `operator.jsonl` for the person, in a folder of
@@ -21,6 +25,7 @@ export class TraceFiles {
   readonly #tell: (text: string) => void;
   readonly #held: { readonly name: string; readonly line: string }[] = [];
   #heldSize = 0;
+  #untilLook = 0;
   #folder: string | undefined;
   readonly #files = new Map<string, number>();
   /** Those that have their first line. */
@@ -94,7 +99,15 @@ export class TraceFiles {
       this.#files.set(name, file);
     }
     const bytes = Buffer.from(lines);
+    this.#untilLook -= bytes.length;
+    if (this.#untilLook <= 0) this.#lookAtRoom();
     for (let written = 0; written < bytes.length;) written += writeSync(file, bytes, written);
+  }
+
+  #lookAtRoom(): void {
+    this.#untilLook = lookEvery;
+    const { bavail, bsize } = statfsSync(this.#folder ?? '.');
+    if (bavail * bsize < leftFree) throw new Error('less than 4 MiB are free there');
   }
 
   #unlessItFails(work: () => void): void {

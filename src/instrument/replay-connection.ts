@@ -125,7 +125,8 @@ class ReplayConnection implements Connection {
 
   #peek(): Promise<TraceEntry | 'end'> {
     if (this.#closed === undefined) return this.#tape.peek();
-    throw new ConnectionLostError({ address: this.address, reason: 'it was closed here' });
+    // Of two ends the first counts.
+    throw this.#lost ?? new ConnectionLostError({ address: this.address, reason: 'it was closed here' });
   }
 
   #lose({ t, reason }: Lost): ConnectionLostError {
