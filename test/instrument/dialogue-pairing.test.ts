@@ -118,6 +118,47 @@ describe('the dialogue', () => {
     expect(written.map((at) => Number(at.toFixed(9)))).toEqual([0, 0.25, 0.3]);
   });
 
+  it('sends nothing while the instrument hears nothing, and waits for no longer than that', async () => {
+    const answering = (message: string, at: number): readonly Arrival[] =>
+      message.endsWith('?') ? [{ at, bytes: Buffer.from(`${answerTo(message)}\n`) }] : [];
+    const { clock, line, dialogue } = inVirtualTime(answering, 0.05);
+    const written: number[] = [];
+    const write = line.write.bind(line);
+    line.write = (bytes) => {
+      written.push(Number(clock.now().toFixed(9)));
+      return write(bytes);
+    };
+    await dialogue.tell('FUNC CURR', 0.3);
+    expect(clock.now()).toBe(0);
+    await dialogue.tell('CURR 1');
+    await dialogue.ask('Q1?', { rest: 0.02 });
+    await dialogue.ask('Q2?', { rest: 0.4 });
+    await dialogue.ask('Q3?');
+    expect(written).toEqual([0, 0.3, 0.35, 0.4, 0.8]);
+  });
+
+  it('throws away what an instrument says while it hears nothing, before the next question', async () => {
+    const { dialogue } = inVirtualTime((message, at) =>
+      message === 'FUNC CURR'
+        ? [{ at: at + 0.2, bytes: Buffer.from('99.9\n') }]
+        : [{ at: at + 0.01, bytes: Buffer.from(`${answerTo(message)}\n`) }],
+    );
+    await dialogue.tell('FUNC CURR', 0.3);
+    expect(await dialogue.ask('Q1?')).toBe('answer to Q1?');
+  });
+
+  it('waits for one answer as long as is said, and for the next as long as ever', async () => {
+    const { clock, dialogue } = inVirtualTime(stalling([0, 7, 0].map((delay) => ({ delay, lost: false }))));
+    await dialogue.ask('*IDN?');
+    expect(await dialogue.ask('*OPC?', { within: 10 })).toBe('answer to *OPC?');
+    expect(clock.now()).toBeCloseTo(7, 9);
+    await expect(dialogue.ask('*OPC?', { within: 0 })).rejects.toMatchObject({
+      code: 'INSTRUMENT_SILENT',
+      timeout: 0,
+    });
+    expect(await dialogue.ask('Q3?')).toBe('answer to Q3?');
+  });
+
   it('gets back in step by the identity, without more waiting than that takes', async () => {
     const { clock, line, dialogue } = inVirtualTime(
       stalling([0, 1.5].map((delay) => ({ delay, lost: false }))),
