@@ -11,6 +11,7 @@ import type { Result } from '../../src/report/result.js';
 import { nobodyWatches } from './run-quietly.js';
 
 const folder = mkdtempSync(join(tmpdir(), 'railproof-families-'));
+let benches = 0;
 
 afterAll(() => {
   rmSync(folder, { recursive: true, force: true });
@@ -71,7 +72,7 @@ async function performed(
   change: (text: string) => string,
 ): Promise<Result> {
   const original = readFileSync(new URL(`../../fixtures/benches/${bench}.yaml`, import.meta.url), 'utf8');
-  const path = join(folder, `${bench}-${Math.random().toString(36).slice(2)}.yaml`);
+  const path = join(folder, `${bench}-${(benches += 1)}.yaml`);
   writeFileSync(path, change(original));
   const loaded = await loadPlan({ procedure, bench: path, modules: ['fixtures/modules/K1.yaml'] });
   const world = await worldOf(loaded.plan.bench, loaded.plan.drivers);

@@ -57,7 +57,7 @@ describe.each(familyNames)('the shipped family %s', (name) => {
           expect(isClean(made), text).toBe(true);
         }
       }),
-      { numRuns: 30 },
+      { numRuns: 15 },
     );
   });
 

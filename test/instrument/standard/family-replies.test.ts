@@ -25,7 +25,7 @@ const decimals = fc
   .tuple(fc.integer({ min: -999_999, max: 999_999 }), fc.integer({ min: -6, max: 3 }))
   .map(([digits, power]) => Number(`${digits}e${power}`));
 
-const runs = { numRuns: 60 };
+const runs = { numRuns: 40 };
 const readingsOf = (name: string, kind: 'number' | 'flag' | 'channel'): readonly string[] =>
   Object.entries(family(name).driver.readings)
     .filter(([, reading]) => reading.kind === kind)
