@@ -69,7 +69,8 @@ export class Instrument {
    * @throws as `Session.open`
    */
   static async open(parts: InstrumentParts): Promise<Instrument> {
-    return new Instrument(parts, await Session.open(parts));
+    const known = { ...parts, signal: parts.signal ?? parts.wayBack?.signal };
+    return new Instrument(known, await Session.open(known));
   }
 
   get address(): string {

@@ -1,5 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { expression } from '../../src/files/expression.js';
+import { openBench } from '../../src/bench/open-bench.js';
+import { toyDriver, toyLoad } from '../instrument/fixtures/toy-load.js';
+import { VirtualLine } from '../instrument/fixtures/virtual-line.js';
 import { nursery } from './nursery-bench.js';
 
 describe('a bench that is opened', () => {
@@ -31,6 +34,19 @@ describe('a bench that is opened', () => {
     await expect(open()).rejects.toMatchObject({ code: 'INSTRUMENT_SILENT', exitCode: 69 });
     expect(lines).toHaveLength(2);
     for (const line of lines) await expect(line.write(Buffer.from('*IDN?\n'))).rejects.toThrow(/closed/);
+  });
+
+  it('gives its instruments their panels back when another does not answer', async () => {
+    const { description, drivers, clock } = await nursery();
+    const load = toyLoad();
+    const opening = openBench({
+      ...{ bench: description, clock, onInput: () => undefined, onNotice: () => undefined },
+      drivers: { load: { ...toyDriver, local: [{ text: 'SYST:LOC' }] }, meter: drivers.meter },
+      connect: (_address, _driver, role) =>
+        Promise.resolve(new VirtualLine(clock, role === 'load' ? load.react : () => [])),
+    });
+    await expect(opening).rejects.toMatchObject({ code: 'INSTRUMENT_SILENT' });
+    expect(load.told.slice(-2)).toEqual(['INP?', 'SYST:LOC']);
   });
 
   it('says that the load is on when another instrument fails, and leaves it as it was found', async () => {

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { expression } from '../../src/files/expression.js';
 import { VirtualClock } from '../../src/clock/virtual-clock.js';
-import type { Driver } from '../../src/files/driver.js';
+import type { Driver, DriverReading } from '../../src/files/driver.js';
 import { Instrument } from '../../src/instrument/instrument.js';
 import { toyDriver, toyLoad } from './fixtures/toy-load.js';
 import { VirtualLine } from './fixtures/virtual-line.js';
@@ -282,6 +282,29 @@ describe('an instrument', () => {
     });
     await instrument.read('voltage');
     expect(load.told.slice(-2)).toEqual(['FUNC VOLT', 'MEAS:VOLT?']);
+  });
+
+  it('is not waited for until its mean is new once the run must stop', async () => {
+    const clock = new VirtualClock(new Date(0));
+    const stop = new AbortController();
+    const voltage = { ...toyDriver.readings['voltage'], averaging: 60 } as DriverReading;
+    const instrument = await Instrument.open({
+      ...{ role: 'load', clock, connection: new VirtualLine(clock, toyLoad().react) },
+      driver: { ...toyDriver, readings: { voltage } },
+      wayBack: {
+        connect: () => Promise.reject(new Error('nobody is sought here')),
+        isWanted: () => true,
+        signal: stop.signal,
+        onGap: () => undefined,
+        onNotice: () => undefined,
+      },
+    });
+    await instrument.read('voltage');
+    await instrument.read('voltage');
+    expect(clock.now()).toBeGreaterThan(60);
+    stop.abort();
+    expect(await instrument.read('voltage')).toEqual({ kind: 'value', value: 15.1 });
+    expect(clock.now()).toBeLessThan(62);
   });
 
   it('says what its driver does not know', async () => {
