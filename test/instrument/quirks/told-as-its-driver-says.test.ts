@@ -30,7 +30,7 @@ function load(parts: Readonly<Record<string, string>> = {}, timeout = '2 s'): Dr
         'summary: A load with manners',
         'identify: "*IDN?"',
       ],
-      `wire: { send-end: "\\n", reply-end: "\\n", gap: 0 ms, timeout: ${timeout} }`,
+      `wire: { send-end: "\\n", reply-end: "\\n", gap: 0 ms, timeout: ${timeout}${usual['wire'] ?? ''} }`,
       ...top.flatMap((key) => (usual[key] === undefined ? [] : [`${key}: ${usual[key]}`])),
       'operations:',
       '  make-safe: ["INP OFF"]',
@@ -85,8 +85,8 @@ describe.each(lines)('over %s', (line, connect) => {
           if (message === 'INP OFF' && state.remote) state.input = false;
           return { '*IDN?': 'NURSERY,LOAD,K1,1', 'INP?': state.input ? '1' : '0' }[message];
         },
-        load({ remote: '[{ send: "SYST:REM", rest: 50 ms }]', local: '["SYST:LOC"]' }),
-        { thinks: 0.005, deaf: { after: /^SYST:REM$/, lasting: 0.03 } },
+        load({ remote: '[{ send: "SYST:REM", rest: 400 ms }]', local: '["SYST:LOC"]' }),
+        { thinks: 0.005, deaf: { after: /^SYST:REM$/, lasting: 0.05 } },
       );
       await instrument.perform('input-on');
       expect(await instrument.flag('input-state')).toBe(true);
@@ -99,6 +99,20 @@ describe.each(lines)('over %s', (line, connect) => {
       expect([state, quirky.missed]).toEqual([{ remote: false, input: false }, []]);
     },
   );
+
+  on('so is one that also echoes what it hears, an empty message too, and prompts for the next', async () => {
+    const { instrument, quirky, notices } = await opened(
+      (message) => ({ '*IDN?': 'NURSERY,LOAD,K1,1', 'MEAS:VOLT?': '15.1' })[message],
+      load({ remote: '["SYST:REM"]', local: '["SYST:LOC"]', wire: ', echo: true, prompt: "> "' }),
+      { thinks: 0.005, echo: '\r\n', prompt: '> ', replyEnd: '\r\n', greets: true },
+    );
+    expect(await instrument.read('voltage')).toEqual({ kind: 'value', value: 15.1 });
+    await instrument.release();
+    await instrument.close();
+    await expect.poll(() => quirky.heard.at(-1), { timeout: 10_000 }).toBe('SYST:LOC');
+    expect(quirky.heard).toEqual(['', 'SYST:REM', '*IDN?', 'MEAS:VOLT?', 'SYST:LOC']);
+    expect(notices).toEqual([]);
+  });
 
   on(
     'of a load with several channels only the one that is meant is spoken to, whoever turns the knob',
@@ -137,8 +151,8 @@ describe.each(lines)('over %s', (line, connect) => {
         async (message) => {
           const amps = /^CURR (.+)$/.exec(message)?.[1];
           if (amps !== undefined) {
-            state.until = realClock.now() + 0.9;
-            setTimeout(() => (state.current = Number(amps)), 800);
+            state.until = realClock.now() + 1.7;
+            setTimeout(() => (state.current = Number(amps)), 1600);
           }
           if (message === '*OPC?') await after(1000 * Math.max(0, state.until - realClock.now()));
           return { '*IDN?': 'NURSERY,LOAD,K1,1', '*OPC?': '1', 'MEAS:CURR?': String(state.current) }[message];
@@ -148,7 +162,7 @@ describe.each(lines)('over %s', (line, connect) => {
             ready: '{ ask: "*OPC?", when: "^1$", within: 20 s }',
             'set-current': '[{ send: "CURR {amps}", until: ready }]',
           },
-          '400 ms',
+          '1 s',
         ),
       );
       await instrument.perform('set-current', { amps: 4 });
@@ -204,11 +218,11 @@ describe.each(lines)('over %s', (line, connect) => {
         return { '*IDN?': 'NURSERY,LOAD,K1,1', 'MEAS:VOLT?': reading }[message];
       },
       load({
-        settling: '100 ms',
+        settling: '1 s',
         voltage:
           '{ ask: "MEAS:VOLT?", unit: V, ranges: [{ up-to: 2 V, select: ["VOLT:RANG 2"] }, { up-to: 200 V, select: ["VOLT:RANG 200"] }] }',
       }),
-      { thinks: 0.005, deaf: { after: /^VOLT:RANG/, lasting: 0.08 } },
+      { thinks: 0.005, deaf: { after: /^VOLT:RANG/, lasting: 0.05 } },
     );
     expect(await instrument.read('voltage')).toEqual({ kind: 'value', value: 1.23 });
     expect(await instrument.read('voltage')).toEqual({ kind: 'value', value: 1.2345 });
