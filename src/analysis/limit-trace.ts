@@ -46,7 +46,7 @@ const wobble = 0.03;
  * - constant-power: the current rises as the voltage falls, V·I within a tenth, over a tenth of the
  *   open-circuit voltage or more; below that it may give up.
  * - hiccup: at some voltage and below it gives current at times and none at others, or none at all and
- *   comes back by itself when the load is off.
+ *   comes back by itself when the load is off, which must have been seen.
  * - constant-current: a steady current, within a tenth, down to below half the open-circuit voltage.
  * - foldback: a steady current that falls with the voltage, by more than a tenth, as far down.
  *
@@ -62,7 +62,7 @@ export function limitTraceOf(
     const points = step.points.flatMap(tracedPoint);
     if (points.length === 0) continue;
     const beyond = points.filter((point) => !isRegulated(point, { openCircuit, droop }));
-    const verdict = afterOverload(step) ?? styleOf(beyond, openCircuit);
+    const verdict = afterOverload(step) ?? styleOf(beyond, openCircuit, step);
     const holds = beyond.every(({ gives }) => gives === 'all');
     return { ...verdict, step: step.step, limited: holds ? beyond : [] };
   }
@@ -105,7 +105,7 @@ function afterOverload({ recoveries }: StepEvidence): Verdict | undefined {
     : { style: 'latch-off', because: 'held at a lower voltage it switched itself off and stayed off' };
 }
 
-function styleOf(beyond: readonly Traced[], openCircuit: Volts): Verdict {
+function styleOf(beyond: readonly Traced[], openCircuit: Volts, { recoveries }: StepEvidence): Verdict {
   const giving = beyond.filter(({ gives }) => gives === 'all');
   const [highest] = giving;
   const lowest = giving.at(-1);
@@ -116,9 +116,16 @@ function styleOf(beyond: readonly Traced[], openCircuit: Volts): Verdict {
     return { style: 'constant-power', because: `its power stays the same as its voltage falls${ends}` };
   }
   if (failing !== undefined) {
+    const triesAgain = beyond.some(({ gives }) => gives === 'some');
+    if (!triesAgain && recoveries.length === 0) {
+      return {
+        style: 'undetermined',
+        because: `held at ${below} it gave nothing, and the run ended before it could come back`,
+      };
+    }
     return {
       style: 'hiccup',
-      because: beyond.some(({ gives }) => gives === 'some')
+      because: triesAgain
         ? `held at ${below} and below it tries again and again: no steady current flows into a short`
         : `held at ${below} and below it gives nothing, and comes back by itself`,
     };

@@ -56,6 +56,12 @@ describe('how a module limits, by a trace', () => {
     ],
     ['hiccup', pulsing, [], /^held at 14\.7 V and below it tries again and again/],
     ['hiccup', nothing, [['came-back', 0.2, 0.3]], /^held at 14\.7 V and below it gives nothing/],
+    [
+      'undetermined',
+      nothing,
+      [],
+      /^held at 14\.7 V it gave nothing, and the run ended before it could come back$/,
+    ],
     ['latch-off', nothing, [['stayed-off', 10, 10]], /switched itself off and stayed off/],
     [
       'undetermined',
