@@ -1,4 +1,4 @@
-import { parseDocument } from 'yaml';
+import { type Document, isAlias, parseDocument } from 'yaml';
 import { placeOf, type Post } from './bench.js';
 
 /**
@@ -8,9 +8,8 @@ import { placeOf, type Post } from './bench.js';
 export function asReplayed(text: string, posts: readonly Post[], withDrivers: boolean): string {
   const document = parseDocument(text);
   for (const post of posts) {
-    const place = placeOf(post);
-    document.setIn([...place, 'connection'], `replay:${post}.jsonl`);
-    if (withDrivers) document.setIn([...place, 'driver'], `driver-${post}.yaml`);
+    setAt(document, post, 'connection', `replay:${post}.jsonl`);
+    if (withDrivers) setAt(document, post, 'driver', `driver-${post}.yaml`);
   }
   document.set('operator', 'replay:operator.jsonl');
   return document.toString();
@@ -23,8 +22,16 @@ export function asReplayed(text: string, posts: readonly Post[], withDrivers: bo
 export function withAddresses(text: string, addresses: Readonly<Partial<Record<Post, string>>>): string {
   const document = parseDocument(text);
   for (const [post, address] of Object.entries(addresses) as [Post, string][]) {
-    document.setIn([...placeOf(post), 'connection'], address);
+    setAt(document, post, 'connection', address);
   }
   document.deleteIn(['simulation']);
   return document.toString();
+}
+
+/** An instrument that is written as another one again gets words of its own. */
+function setAt(document: Document, post: Post, key: 'connection' | 'driver', text: string): void {
+  const place = placeOf(post);
+  const written = document.getIn(place, true);
+  if (isAlias(written)) document.setIn(place, document.createNode(written.toJS(document)));
+  document.setIn([...place, key], text);
 }

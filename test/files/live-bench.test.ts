@@ -1,5 +1,5 @@
 import { expect, it } from 'vitest';
-import { withAddresses } from '../../src/files/live-bench.js';
+import { asReplayed, withAddresses } from '../../src/files/live-bench.js';
 import { parseBench } from '../../src/files/read-bench.js';
 
 const text = `railproof: bench 1
@@ -37,4 +37,36 @@ it('a served bench is real to whoever uses it: every address of it, those at the
     { kind: 'tcp', port: 11 },
     { kind: 'serial', path: '/dev/pts/7' },
   ]);
+});
+
+it('a replayed bench has a recording and a driver for each instrument, and the answers of the person', () => {
+  const replayed = asReplayed(text, ['load', 'meter', 'meter-1', 'meter-2'], true);
+  expect(replayed).toContain('# what stays stays');
+  const { instruments, group, simulation, operator } = parseBench(replayed, 'replay.yaml');
+  expect(simulation).toBeDefined();
+  expect(operator).toEqual({ kind: 'replay', file: 'operator.jsonl' });
+  const at = (post: string): object => ({
+    driver: `driver-${post}.yaml`,
+    connection: { kind: 'replay', file: `${post}.jsonl` },
+  });
+  expect(instruments).toEqual({ load: at('load'), meter: at('meter') });
+  expect(group?.places.map(({ meter }) => meter)).toEqual([at('meter-1'), at('meter-2')]);
+  const kept = parseBench(asReplayed(text, ['load', 'meter', 'meter-1', 'meter-2'], false), 'replay.yaml');
+  expect(kept.instruments.load).toEqual({ ...at('load'), driver: 'load-input-scpi' });
+});
+
+it('an instrument that is written as another one again has an address of its own', () => {
+  const place = "{ driver: meter-query-scpi, connection: 'simulated:' }";
+  const twice = text
+    .replace(`meter: ${place}`, `meter: &own ${place}`)
+    .replace(`meter: ${place}`, 'meter: *own');
+  expect(twice).toContain('meter: *own');
+  const live = withAddresses(twice, {
+    load: 'tcp://127.0.0.1:1',
+    meter: 'tcp://127.0.0.1:2',
+    'meter-1': 'tcp://127.0.0.1:11',
+    'meter-2': 'tcp://127.0.0.1:12',
+  });
+  const { group } = parseBench(live, 'live.yaml');
+  expect(group?.places.map(({ meter }) => meter?.connection)).toMatchObject([{ port: 11 }, { port: 12 }]);
 });

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { parseBench } from '../../src/files/read-bench.js';
+import { besideBench, parseBench } from '../../src/files/read-bench.js';
 import { benchExample, simulationExample } from './design-examples.js';
 import { problemsOf } from './problems-of.js';
 
@@ -289,5 +289,34 @@ describe('the dc source of a bench', () => {
     expect(() =>
       parseBench(changed('modules:', 'instruments: { source: {} }\n  modules:'), 'b.yaml'),
     ).toThrow('there is no source among the instruments of this bench');
+  });
+});
+
+describe('recorded answers of the person at the bench', () => {
+  const replayed = benchExample
+    .replace(/tcp:[^"]*/, 'replay:load.jsonl')
+    .replace(/serial:[^"]*/, 'replay:meter.jsonl');
+
+  it('are looked for beside the bench, as the recordings of its instruments', () => {
+    const bench = parseBench(`${replayed}operator: replay:operator.jsonl\n`, 'bench.yaml');
+    const { operator, instruments } = besideBench(bench, '/bench');
+    expect(operator).toEqual({ kind: 'replay', file: '/bench/operator.jsonl' });
+    expect(instruments.load.connection).toEqual({ kind: 'replay', file: '/bench/load.jsonl' });
+  });
+
+  it('never stand in for a person where an instrument is real', () => {
+    const text = `${benchExample}operator: replay:operator.jsonl\n`;
+    expect(problemsOf(() => parseBench(text, 'bench.yaml'))).toEqual([
+      expect.stringMatching(
+        /operator: recorded answers go with replayed instruments only, and the load is none$/,
+      ),
+    ]);
+  });
+
+  it('are a recording', () => {
+    const text = `${replayed}operator: tcp://127.0.0.1:1\n`;
+    expect(problemsOf(() => parseBench(text, 'bench.yaml'))).toEqual([
+      expect.stringContaining("'tcp://127.0.0.1:1'; a recording is needed: replay:operator.jsonl"),
+    ]);
   });
 });
