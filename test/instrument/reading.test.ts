@@ -1,3 +1,4 @@
+import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { expression } from '../../src/files/expression.js';
 import { readChannel, readFlag, readNumber } from '../../src/instrument/reading.js';
@@ -61,6 +62,32 @@ describe('a number in another unit than that of its dimension', () => {
     ['0.5 uA', { ...withUnit, dimension: 'current' }, 5e-7],
   ] as const)('%s keeps its last digit', (reply, reading, value) => {
     expect(readNumber(reply, reading, about)).toEqual({ kind: 'value', value });
+  });
+
+  it('is, whatever its form, the number that moving the point gives', () => {
+    const units = { V: 0, mV: -3, uV: -6, kV: 3, MV: -3, v: 0 } as const;
+    const digits = fc.string({
+      unit: fc.constantFrom(...['0', '1', '2', '3', '5', '7', '9']),
+      minLength: 1,
+      maxLength: 6,
+    });
+    fc.assert(
+      fc.property(
+        fc.constantFrom('', '+', '-'),
+        digits,
+        digits,
+        fc.option(fc.integer({ min: -12, max: 12 })),
+        fc.constantFrom(...(Object.keys(units) as (keyof typeof units)[])),
+        fc.constantFrom('', ' '),
+        (sign, whole, part, exponent, unit, space) => {
+          const number = `${sign}${whole}.${part}`;
+          fc.pre(Number(number) !== 0);
+          const reply = `${number}${exponent === null ? '' : `E${exponent}`}${space}${unit}`;
+          const value = Number(`${number}e${(exponent ?? 0) + units[unit]}`);
+          expect(readNumber(reply, withUnit, about)).toEqual({ kind: 'value', value });
+        },
+      ),
+    );
   });
 
   it('is turned round by its scale, whoever names the unit', () => {
