@@ -139,7 +139,9 @@ describe('an expression of a driver', () => {
     );
     fc.assert(
       fc.property(fc.constantFrom(...sources), replies, (source, reply) => {
-        const theirs = new RegExp(source).exec(reply);
+        // Where the whole of it takes any case, JavaScript wants to be told so beside it.
+        const [, anyCase = '', rest = ''] = /^(\(\?i\))?(.*)$/s.exec(source) ?? [];
+        const theirs = new RegExp(rest, anyCase === '' ? '' : 'i').exec(reply);
         expect(expression(source).finds(reply)).toBe(theirs !== null);
         expect(expression(source).group('value', reply)).toBe(theirs?.groups?.['value']);
       }),
