@@ -51,7 +51,7 @@ export async function tryOut(wanted: TryWanted, streams: Streams): Promise<ExitC
   stop.hurry.addEventListener('abort', () => void connection.close(), { once: true });
   let ending: Ending = { how: 'as-it-should' };
   try {
-    streams.stderr.write(`${driver.name} at ${printable(connection.address)}\n`);
+    if (!json) streams.stderr.write(`${driver.name} at ${printable(connection.address)}\n`);
     const done = await tryDriver({
       ...{ driver, channel: wanted.channel, connection, clock, signal: stop.signal },
       agree: (switching) => agree(switching, streams, stop),
@@ -65,7 +65,8 @@ export async function tryOut(wanted: TryWanted, streams: Streams): Promise<ExitC
         say(`${resultText(result, streams.stdout.columns)}\n`);
       },
       onPace: () => {
-        streams.stderr.write('… finding out how fast it may be spoken to; this may take a minute\n');
+        if (json) return;
+        streams.stderr.write('Finding out how fast it may be spoken to; this may take a minute.\n');
       },
     });
     trial = done;

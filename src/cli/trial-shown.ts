@@ -17,12 +17,16 @@ const indent = '  ';
 
 /** A verdict, then every byte that went for it, with its ends of line: `> INP?\n  < 0\r\n`. */
 export function resultText(result: TrialResult, columns = usualWidth): string {
-  const { verdict, name, sent, received, detail, seconds } = result;
+  const { part, verdict, name, sent, received, detail, seconds } = result;
   const time = seconds > 0 ? milliseconds(seconds) : '';
   const head = `${verdict.padEnd(10)}  ${name.padEnd(18)}  ${time.padStart(8)}  `;
-  const said = verdict === 'refused' || verdict === 'unclear' ? (received ?? '') : '';
-  const unsent = verdict === 'not-sent' ? `"${visible(sent)}"` : '';
-  const words = [unsent, said, detail].filter((each) => each !== '').join('  ');
+  // What came stands below, byte for byte; an error is what is to be seen at once.
+  const words =
+    verdict === 'not-sent'
+      ? `"${visible(sent)}" ${detail}`
+      : verdict === 'refused' && part !== 'proof'
+        ? (received ?? detail)
+        : detail;
   const text = wordWrap(words, Math.max(columns - head.length, 20)).replaceAll(
     '\n',
     `\n${' '.repeat(head.length)}`,

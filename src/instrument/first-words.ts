@@ -2,14 +2,13 @@
 export interface FirstWords {
   /** It repeats what it is sent before it answers. */
   readonly echo: boolean;
-  /** What stands behind the last end of a line: it will take the next message. */
+  /** What stands behind the reply and its end: it will take the next message. */
   readonly prompt: string | undefined;
   /** The first line that is no echo; undefined where there is none. */
   readonly reply: string | undefined;
   readonly replyEnd: '\r\n' | '\n' | '\r' | undefined;
 }
 
-const longestPrompt = 20;
 const lineEnd = /\r\n|\n|\r/;
 
 /**
@@ -20,10 +19,9 @@ export function firstWords(text: string, question: string): FirstWords {
   const echo = text.replace(/^[\r\n]+/, '').startsWith(question);
   const rest = echo ? text.slice(text.indexOf(question) + question.length) : text;
   const { line: reply, end: replyEnd, after } = nextLine(rest.replace(/^[\r\n]+/, ''));
-  const prompt = replyEnd === undefined ? '' : (after.split(lineEnd).at(-1) ?? '');
   return {
     echo,
-    prompt: isPrompt(prompt) ? prompt : undefined,
+    prompt: isPrompt(after) ? after : undefined,
     reply: reply.trim() === '' ? undefined : reply,
     replyEnd,
   };
@@ -40,7 +38,7 @@ function nextLine(text: string): {
   return { line: text.slice(0, found.index), end, after: text.slice(found.index + end.length) };
 }
 
-/** As a driver file may write it: seen, short, and nothing that steers a terminal. */
+/** As a driver file may write it: short, and it ends in something that is seen and has no end of line. */
 function isPrompt(text: string): boolean {
-  return text.length <= longestPrompt && /^[\x20-\x7e]*[\x21-\x7e] {0,4}$/.test(text);
+  return /^[\x20-\x7e\r\n]{0,19}[\x21-\x7e] {0,4}$/.test(text);
 }

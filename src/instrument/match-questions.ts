@@ -34,6 +34,10 @@ export function harmlessQuestions(driver: Driver): readonly MatchQuestion[] {
     if (text.includes('{') || questions.some((each) => each.text === text)) return;
     questions.push({ text, kind, understands });
   };
+  const addSetting = (message: string, understands: MatchQuestion['understands']): void => {
+    const [, header] = /^([A-Za-z:]+) \S/.exec(message) ?? [];
+    if (header !== undefined) add(`${header}?`, 'state', understands);
+  };
   const { errors } = driver;
   if (errors !== 'none')
     add(
@@ -51,15 +55,10 @@ export function harmlessQuestions(driver: Driver): readonly MatchQuestion[] {
       reads((answer) => meaningOf(answer, reading, aboutNobody)),
     );
   }
+  for (const { text } of driver.channels?.select ?? []) addSetting(text, isNumber);
   for (const [operation, messages] of Object.entries(driver.operations)) {
     if (!settings.test(operation)) continue;
-    const [, header] = /^([A-Za-z:]+) \S/.exec(messages.at(-1)?.text ?? '') ?? [];
-    if (header === undefined) continue;
-    add(
-      `${header}?`,
-      'state',
-      operation.endsWith('-mode') ? isWord : reads((answer) => parseScpiNumber(answer)),
-    );
+    addSetting(messages.at(-1)?.text ?? '', operation.endsWith('-mode') ? isWord : isNumber);
   }
   return questions;
 }
@@ -82,6 +81,8 @@ function reads(read: (answer: string) => unknown): (answer: string) => boolean {
     }
   };
 }
+
+const isNumber = reads((answer) => parseScpiNumber(answer));
 
 /** `CURR`, `"CURR"`, `CC`: what a mode is called, and no number. */
 function isWord(answer: string): boolean {

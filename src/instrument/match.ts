@@ -69,9 +69,14 @@ export async function matchDrivers(parts: MatchParts): Promise<Match> {
   const asked = await askAll(parts, met);
   const families = parts.drivers
     .map((driver) => familyMatch(driver, met.identity, asked.answers))
-    .filter(({ understood }) => understood.length > 0)
+    .filter(({ understood }) => understood.some((question) => !isForErrors(question, parts.drivers)))
     .sort((one, other) => Number(one.isAnother) - Number(other.isAnother) || other.score - one.score);
   return { kind: 'answered', ...met, families, left: asked.left };
+}
+
+/** All families have it in common, and so it tells nothing of any. */
+function isForErrors(question: string, drivers: readonly Driver[]): boolean {
+  return drivers.some(({ errors }) => errors !== 'none' && errors.ask === question);
 }
 
 interface Met {
@@ -118,10 +123,7 @@ async function askAll(
   const dialogue = dialogueFor(parts, met);
   const put = async (question: string, within: Seconds): Promise<void> => {
     if (answers.has(question) || signal?.aborted === true) return;
-    const answer = await dialogue.ask(question, { within }).catch((error: unknown) => {
-      if (isGap(error) && !(error instanceof ConnectionLostError)) return undefined;
-      throw error;
-    });
+    const answer = await dialogue.ask(question, { within }).catch(unheard);
     answers.set(question, answer);
     parts.onAnswer?.(question, answer);
   };
@@ -132,7 +134,7 @@ async function askAll(
   }
   const { questions, left } = measuredQuestions(drivers, answers);
   for (const question of questions) await put(question, patience.measured);
-  await emptyErrors(drivers, answers, put);
+  await emptyErrors(dialogue, drivers, answers);
   return { answers, left };
 }
 
@@ -154,25 +156,21 @@ function dialogueFor(
   });
 }
 
-/** So many errors as there were questions that it did not know; what it had before goes with them. */
-async function emptyErrors(
-  drivers: readonly Driver[],
-  answers: Map<string, string | undefined>,
-  put: (question: string, within: Seconds) => Promise<void>,
-): Promise<void> {
-  for (const { errors } of drivers) {
-    if (errors === 'none' || errors.kind !== 'queue') continue;
-    const first = answers.get(errors.ask);
-    if (first === undefined) continue;
-    for (let entries = 0; entries < answers.size; entries++) {
-      answers.delete(errors.ask);
-      await put(errors.ask, patience.state);
-      const answer = answers.get(errors.ask);
-      if (answer === undefined || errors.clear.finds(answer.trim())) break;
-    }
-    answers.set(errors.ask, first);
-    return;
+/** Takes from its queue the errors of questions that it did not know, and what it had before. */
+async function emptyErrors(dialogue: Dialogue, drivers: readonly Driver[], answers: Answers): Promise<void> {
+  const queue = drivers.find(
+    ({ errors }) => errors !== 'none' && answers.get(errors.ask) !== undefined,
+  )?.errors;
+  if (queue === undefined || queue === 'none' || queue.kind !== 'queue') return;
+  for (let entries = 0; entries <= answers.size; entries++) {
+    const answer = await dialogue.ask(queue.ask).catch(unheard);
+    if (answer === undefined || queue.clear.finds(answer.trim())) return;
   }
+}
+
+function unheard(error: unknown): undefined {
+  if (isGap(error) && !(error instanceof ConnectionLostError)) return undefined;
+  throw error;
 }
 
 function familyMatch(driver: Driver, identity: string, answers: Answers): FamilyMatch {

@@ -41,6 +41,8 @@ export class TrialPace {
   readonly #wire: Wire;
   /** How long it takes to say who it is. */
   #usual: Seconds = 0;
+  /** Which of the pauses was long enough so far. */
+  #longEnough = 0;
 
   /** `wire` is a way in which it answers beyond doubt. */
   constructor(line: TrialLine, wire: Wire) {
@@ -103,7 +105,12 @@ export class TrialPace {
       return { pause: 0, late: late > noise ? late : 0 };
     }
     const patience = Math.min(this.#wire.timeout, Math.max(0.3, 5 * this.#usual));
-    let [missed, heard] = [0, pauses.length];
+    // What was long enough after something else mostly is here too.
+    const known = this.#longEnough;
+    if (known > 0 && (await this.#answersAfter(messages, pauses[known] ?? 0, patience)) !== undefined) {
+      return { pause: pauses[known], late: 0 };
+    }
+    let [missed, heard] = [known, pauses.length];
     while (heard - missed > 1) {
       // The longest first: it says whether any will do.
       const middle = heard === pauses.length ? pauses.length - 1 : Math.floor((missed + heard) / 2);
@@ -112,6 +119,7 @@ export class TrialPace {
       else if (middle === pauses.length - 1) break;
       else missed = middle;
     }
+    this.#longEnough = heard < pauses.length ? heard : known;
     return { pause: pauses[heard], late: 0 };
   }
 
