@@ -1,5 +1,6 @@
 import { execFileSync } from 'node:child_process';
 import { existsSync, mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { type AddressInfo, connect, createServer } from 'node:net';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, describe, expect, it, onTestFinished, vi } from 'vitest';
@@ -38,10 +39,8 @@ afterAll(() => {
   rmSync(folder, { recursive: true, force: true });
 });
 
-async function served(name: string, lines: 'tcp' | 'pty', faults = ''): Promise<string> {
-  const bench = join(folder, `${name}.yaml`);
-  writeFileSync(bench, nursery + faults);
-  const there = await serve(bench, join(folder, `${name}-live.yaml`), lines);
+async function served(name: string, lines: 'tcp' | 'pty'): Promise<string> {
+  const there = await serve('fixtures/benches/nursery.yaml', join(folder, `${name}-live.yaml`), lines);
   onTestFinished(() => there.close());
   return there.bench;
 }
@@ -72,13 +71,40 @@ describe('a run in real time, traced and replayed, shows the same to the last di
     await goesAgainAsItWent(await served('pty', 'pty'));
   });
 
-  it('over a line that is lost and found again', async () => {
-    const fault =
-      '  faults: [{ at: 3 s, what: meter-lost, for: 600 ms }, { at: 6 s, what: meter-silent, for: 1.5 s }]\n';
-    const meter = await goesAgainAsItWent(await served('gap', 'tcp', fault));
-    expect(meter.some((line) => line.includes('"lost":"'))).toBe(true);
+  it('over a line that is lost and found again, and swallows a question', async () => {
+    const bench = await served('gap', 'tcp');
+    const text = readFileSync(bench, 'utf8');
+    const [meter = ''] = /(?<=meter:.*)tcp:[\d.:/]+/.exec(text) ?? [];
+    writeFileSync(bench, text.replace(meter, await badLine(meter)));
+    const seen = await goesAgainAsItWent(bench);
+    expect(seen.filter((line) => line.includes('"lost":"'))).toHaveLength(2);
   });
 });
+
+/** A line to an instrument on which one question is lost, then the line, then the one after it at once. */
+async function badLine(to: string): Promise<string> {
+  let heard = 0;
+  let opened = 0;
+  const server = createServer((client) => {
+    const upstream = connect(Number(to.split(':').at(-1)), '127.0.0.1');
+    const cut = (): void => {
+      client.destroy();
+      upstream.destroy();
+    };
+    client.on('error', cut).on('close', cut);
+    upstream.on('error', cut).on('close', cut);
+    upstream.on('data', (reply) => client.write(reply));
+    client.on('data', (message) => {
+      heard += 1;
+      if (heard === 60) cut();
+      else if (heard !== 40) upstream.write(message);
+    });
+    if (++opened === 2) cut();
+  });
+  await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve));
+  onTestFinished(() => void server.close());
+  return `tcp://127.0.0.1:${(server.address() as AddressInfo).port}`;
+}
 
 describe('a bench that could not be opened', () => {
   it('leaves a trace where the records are, which is none, and fails again when it is replayed', async () => {
