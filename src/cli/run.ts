@@ -1,5 +1,7 @@
 import { join } from 'node:path';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import type { Driver } from '../files/driver.js';
+import type { FileRead } from '../files/read-text.js';
 import { printable } from '../quantity/printable.js';
 import { jsonText } from '../report/json-text.js';
 import type { Bench } from '../files/bench.js';
@@ -8,6 +10,7 @@ import { OperatorAbsentError } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
 import { fitted } from '../run/word-wrap.js';
 import type { Operator } from '../steps/operator.js';
+import { atDriverLine } from './driver-line.js';
 import { errorText } from './error-text.js';
 import { statusOfOutcome } from './exit-status.js';
 import { loadPlan, type LoadedPlan } from './load-plan.js';
@@ -45,10 +48,16 @@ export async function run(options: RunOptions, streams: Streams): Promise<ExitCo
     requireOperator(loaded, operator, options.yes === true);
     const play = options.trace === true ? playTraced : playPlain;
     const performed = await play(loaded, { world, operator, runs, stop, streams });
-    return tell(performed, options.json === true, streams);
+    return tell(performed, driverFiles(loaded), options.json === true, streams);
+  } catch (error) {
+    throw atDriverLine(error, driverFiles(loaded));
   } finally {
     stop.release();
   }
+}
+
+function driverFiles({ files }: LoadedPlan): readonly FileRead<Driver>[] {
+  return files.drivers.map(({ file }) => file);
 }
 
 interface Stage {
@@ -96,11 +105,16 @@ async function playTraced(loaded: LoadedPlan, stage: Stage): Promise<PlanPerform
 }
 
 /** The result first, where there is one; then, whatever happened, whether the load is off, as the last words. */
-function tell(performed: PlanPerformed, json: boolean, streams: Streams): ExitCode {
+function tell(
+  performed: PlanPerformed,
+  drivers: readonly FileRead<Driver>[],
+  json: boolean,
+  streams: Streams,
+): ExitCode {
   const { understood, ending, folder, status } = performed;
   if (understood.kind === 'result') streams.stdout.write(shown(understood.result, json, streams));
   streams.stderr.write(`record: ${printable(folder.path)}\n`);
-  if (ending.how !== 'completed') streams.stderr.write(`${errorText(ending.error)}\n`);
+  if (ending.how !== 'completed') streams.stderr.write(`${errorText(atDriverLine(ending.error, drivers))}\n`);
   if (understood.kind === 'error') streams.stderr.write(`${errorText(understood.error)}\n`);
   if (understood.kind === 'result' && understood.unkept !== undefined) {
     const missing = printable(understood.unkept.message);
