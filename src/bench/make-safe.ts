@@ -7,7 +7,13 @@ import { Source } from './source.js';
 export type Safety =
   | { readonly kind: 'confirmed' }
   /** Nobody could read back that it is off; `advice` is for the person at the bench. */
-  | { readonly kind: 'unconfirmed'; readonly why: string; readonly advice: string };
+  | {
+      readonly kind: 'unconfirmed';
+      readonly why: string;
+      readonly advice: string;
+      /** What the last attempt failed by. */
+      readonly cause?: unknown;
+    };
 
 /** Before each attempt on a fresh connection: at once, then after the time an adapter takes to come back. */
 const pauses = [0, 1];
@@ -108,13 +114,15 @@ export async function makeSourceSafeUnopened(
 /** The reason given is that of the last attempt. */
 async function untilConfirmed(attempts: Iterable<() => Promise<void>>, advice: string): Promise<Safety> {
   let why = '';
+  let cause: unknown;
   for (const attempt of attempts) {
     try {
       await attempt();
       return { kind: 'confirmed' };
     } catch (error) {
+      cause = error;
       why = error instanceof Error ? error.message : String(error);
     }
   }
-  return { kind: 'unconfirmed', why, advice };
+  return { kind: 'unconfirmed', why, advice, cause };
 }

@@ -13,7 +13,7 @@ export class AtDriverLineError extends RailproofError {
   readonly place: string;
 
   constructor(error: RailproofError, place: string) {
-    super(`${error.message}; what was sent stands in ${place}`, {
+    super(`${error.message}; see ${place}`, {
       cause: error,
       ...(error.advice === undefined ? {} : { advice: error.advice }),
     });
@@ -26,8 +26,13 @@ export class AtDriverLineError extends RailproofError {
 /** The same error, and the line of the driver file, where it is known which part of which driver was at work. */
 export function atDriverLine(error: unknown, drivers: readonly FileRead<Driver>[]): unknown {
   if (!(error instanceof RailproofError) || error instanceof AtDriverLineError) return error;
-  const place = driverLine(partIn(error), drivers);
+  const place = lineBehind(error, drivers);
   return place === undefined ? error : new AtDriverLineError(error, place);
+}
+
+/** The line behind an error, where it is known. */
+export function lineBehind(error: unknown, drivers: readonly FileRead<Driver>[]): string | undefined {
+  return driverLine(partIn(error), drivers);
 }
 
 /** `drivers/load-input-scpi.yaml:18`; of a driver that comes with the program, by its place in it. */

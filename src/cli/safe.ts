@@ -6,8 +6,11 @@ import {
   type Safety,
 } from '../bench/make-safe.js';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
+import type { Driver } from '../files/driver.js';
 import { readBench } from '../files/read-bench.js';
+import type { FileRead } from '../files/read-text.js';
 import { printable } from '../quantity/printable.js';
+import { lineBehind } from './driver-line.js';
 import { errorText } from './error-text.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
@@ -22,7 +25,9 @@ export async function safe(wanted: { readonly bench: string }, streams: Streams)
   const stop = stopOnSignals(streams);
   try {
     const file = await readBench(wanted.bench);
-    const drivers = planDrivers(await readBenchDrivers(file));
+    const driverFiles = await readBenchDrivers(file);
+    const drivers = planDrivers(driverFiles);
+    const files = driverFiles.map((each) => each.file);
     const world = await worldOf(file.value, drivers);
     const { clock } = world;
     const connections = new Connections(world.connect);
@@ -30,9 +35,9 @@ export async function safe(wanted: { readonly bench: string }, streams: Streams)
     const { connect } = connections;
     const parts = { bench: file.value, drivers, connect, clock };
     const load = await makeSafeUnopened(parts);
-    tell('load', load, streams);
+    tell('load', load, files, streams);
     const source = await makeSourceSafeUnopened(parts);
-    if (source !== undefined) tell('source', source, streams);
+    if (source !== undefined) tell('source', source, files, streams);
     const confirmed = load.safety.kind === 'confirmed' && source?.safety.kind !== 'unconfirmed';
     // Of both it is the load that must not be missed.
     if (source !== undefined && load.safety.kind === 'unconfirmed') {
@@ -50,13 +55,14 @@ export async function safe(wanted: { readonly bench: string }, streams: Streams)
 function tell(
   what: 'load' | 'source',
   { safety, address }: { readonly safety: Safety; readonly address: string },
+  drivers: readonly FileRead<Driver>[],
   { stdout, stderr }: Streams,
 ): void {
   if (safety.kind === 'confirmed') {
     stdout.write(`The ${what} at ${printable(address)} is off; it was read back.\n`);
   } else {
-    stderr.write(
-      `It could not be confirmed that the ${what} is off: ${printable(safety.why)}\n${safety.advice}\n`,
-    );
+    const place = lineBehind(safety.cause, drivers);
+    const why = printable(safety.why) + (place === undefined ? '' : `; see ${printable(place)}`);
+    stderr.write(`It could not be confirmed that the ${what} is off: ${why}\n${safety.advice}\n`);
   }
 }

@@ -166,7 +166,7 @@ describe('that a bench is safe is not claimed', () => {
     const { bench, told, world } = await atWork({
       load: { operations: { ...fromDriver.operations, 'make-safe': [{ text: '*CLS' }] } },
     });
-    expect(await makeSafe(bench)).toEqual({
+    expect(await makeSafe(bench)).toMatchObject({
       kind: 'unconfirmed',
       why: 'the load at simulated:standard-load was made safe and says that its input is on',
       advice:
