@@ -3,7 +3,7 @@ import type { Exchange } from '../files/driver-dialogue.js';
 import { meaningText } from '../files/driver-dialogue-text.js';
 import { placeholderOf } from '../files/driver-checks.js';
 import type { DriverPart } from './driver-part.js';
-import { readErrors, type ReportedError } from './error-report.js';
+import { fateOf, readErrors, type ReportedError } from './error-report.js';
 import { harmlessValues, whyLeftOut } from './harmless.js';
 import { isIdentityFor } from './identity.js';
 import { tellMakeSafe } from './make-safe.js';
@@ -192,7 +192,15 @@ export class TrialWalk {
       const { entries } = await this.#atLast(() => readErrors(this.#talk.dialogue, this.#driver));
       if (entries.length === 0) return { received: undefined, verdict: 'understood', detail: '' };
       const exchanges = entries.map((entry) => this.#reported(entry));
-      return { received: listed(entries), verdict: 'refused', detail: 'in its error queue', exchanges };
+      const isHarmless = exchanges.every((each) => each.kind === 'errors' && each.is === 'harmless');
+      return isHarmless
+        ? {
+            received: listed(entries),
+            verdict: 'understood',
+            detail: 'what its driver calls harmless',
+            exchanges,
+          }
+        : { received: listed(entries), verdict: 'refused', detail: 'in its error queue', exchanges };
     });
   }
 
@@ -279,8 +287,9 @@ export class TrialWalk {
     };
   }
 
-  #reported({ said }: ReportedError): Exchange {
-    return { kind: 'errors', answer: said, is: 'error' };
+  #reported(entry: ReportedError): Exchange {
+    const { errors } = this.#driver;
+    return { kind: 'errors', answer: entry.said, is: errors === 'none' ? 'error' : fateOf(entry, errors) };
   }
 
   #part(section: DriverPart['section'], name?: string): DriverPart {

@@ -236,6 +236,16 @@ describe('trying a driver', () => {
   });
 });
 
+it('takes an error that the driver calls harmless for none', async () => {
+  const errors = { ...toyDriver.errors, harmless: expression('^-113') } as Driver['errors'];
+  const { results } = await trialOf({ driver: { errors } });
+  const told = results.find(({ name }) => name === 'protect-power');
+  expect(told).toMatchObject({ verdict: 'understood', detail: 'what its driver calls harmless' });
+  expect(told?.exchanges).toContainEqual({
+    ...{ kind: 'errors', answer: '-113,"Undefined header"', is: 'harmless' },
+  });
+});
+
 describe('what switches on', () => {
   const agreed = async (answer: boolean, replies: Record<string, string> = {}) => {
     const load = toyLoad({ replies });
