@@ -237,7 +237,8 @@ describe('trying a driver', () => {
 });
 
 it('takes an error that the driver calls harmless for none', async () => {
-  const errors = { ...toyDriver.errors, harmless: expression('^-113') } as Driver['errors'];
+  const queue = { kind: 'queue', ask: 'SYST:ERR?', clear: expression('^0'), afterwards: [] } as const;
+  const errors = { ...queue, harmless: expression('^-113') };
   const { results } = await trialOf({ driver: { errors } });
   const told = results.find(({ name }) => name === 'protect-power');
   expect(told).toMatchObject({ verdict: 'understood', detail: 'what its driver calls harmless' });
