@@ -72,8 +72,11 @@ export const readingSchema = z
       'What a no looks like, where it does not end in 0, OFF, FALSE or NO.',
     ).exactOptional(),
     'channel-in': regularExpression(
-      "Finds the number of the scanner's closed channel, in a group named value; none is closed where it finds none.",
+      "Finds the number of the scanner's closed channel, in a group named value.",
       ['value'],
+    ).exactOptional(),
+    'none-when': regularExpression(
+      'What the reply looks like when no channel is closed, where that is no empty list: (@).',
     ).exactOptional(),
   })
   .superRefine((value, context) => {
@@ -94,6 +97,9 @@ export const readingSchema = z
     if (kinds.length === 1 && value['true-when'] === undefined && value['false-when'] !== undefined) {
       complain(['false-when'], "only a reading with 'true-when' can be false");
     }
+    if (kinds.length === 1 && value['channel-in'] === undefined && value['none-when'] !== undefined) {
+      complain(['none-when'], "only a reading with 'channel-in' can be none");
+    }
     for (const [index, { 'up-to': most }] of (value.ranges ?? []).entries()) {
       const before = value.ranges?.[index - 1]?.['up-to'];
       if (value.unit !== undefined && most.dimension !== value.unit.dimension) {
@@ -105,8 +111,9 @@ export const readingSchema = z
   })
   .transform((value): DriverReading => {
     const { ask: asked, unit: given, pattern, 'true-when': trueWhen, 'channel-in': channelIn } = value;
-    const { 'false-when': falseWhen, scale, ranges, averaging } = value;
-    if (channelIn !== undefined) return { kind: 'channel', ask: asked, channelIn };
+    const { 'false-when': falseWhen, 'none-when': noneWhen, scale, ranges, averaging } = value;
+    if (channelIn !== undefined)
+      return { kind: 'channel', ask: asked, channelIn, ...(noneWhen === undefined ? {} : { noneWhen }) };
     if (trueWhen !== undefined)
       return { kind: 'flag', ask: asked, trueWhen, ...(falseWhen === undefined ? {} : { falseWhen }) };
     // The refinement above lets no reading through that has neither.

@@ -141,8 +141,14 @@ export type DriverReading =
       /** What a no looks like, where it is none of `0`, `OFF`, `FALSE` and `NO`. */
       readonly falseWhen?: Expression;
     }
-  /** `channelIn` finds the number in a group named `value`; a reply without one means that none is closed. */
-  | { readonly kind: 'channel'; readonly ask: readonly Message[]; readonly channelIn: Expression };
+  | {
+      readonly kind: 'channel';
+      readonly ask: readonly Message[];
+      /** Finds the number in a group named `value`. */
+      readonly channelIn: Expression;
+      /** What the reply looks like when none is closed, where that is no empty list: `(@)`. */
+      readonly noneWhen?: Expression;
+    };
 
 /** Half-widths of the promised error: a part of the reading plus a fixed part, in the reading's unit. */
 export interface Accuracy {

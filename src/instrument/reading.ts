@@ -57,8 +57,12 @@ function times(measurement: Measurement, factor: number): Measurement {
   return { kind: 'value', value: product(measurement.value, factor) };
 }
 
+/** An empty channel list (SCPI-99, volume 1, 8.3.2; from memory), in a block or not. */
+const emptyList = /^(?:#(?:0|[1-9]\d{1,9}))?\s*\(\s*@\s*\)$/;
+
 /**
- * The number of the channel in a reply; null where the reply names none.
+ * The number of the channel in a reply; null where it says that none is closed (an empty list, or what the driver
+ * says): a reply that makes no sense must never stand for that.
  * @throws ReplyNotUnderstoodError
  */
 export function readChannel(
@@ -66,13 +70,18 @@ export function readChannel(
   reading: Extract<DriverReading, { kind: 'channel' }>,
   about: About,
 ): number | null {
-  const expected = `a reply in which /${reading.channelIn.source}/ finds a channel`;
+  const { channelIn, noneWhen } = reading;
   const text = searchedIn(reply);
-  if (text === undefined) throw new ReplyNotUnderstoodError({ ...about, reply, expected });
-  const value = reading.channelIn.group('value', text);
-  if (value === undefined) return null;
-  if (!/^\d{1,6}$/.test(value)) throw new ReplyNotUnderstoodError({ ...about, reply, expected });
-  return Number(value);
+  // First, since what finds a channel may find the length of a block that holds no list.
+  if (text !== undefined && (noneWhen?.finds(text) ?? emptyList.test(text))) return null;
+  const value = text === undefined ? undefined : channelIn.group('value', text);
+  if (value !== undefined && /^\d{1,6}$/.test(value)) return Number(value);
+  const none = noneWhen === undefined ? '(@)' : `/${noneWhen.source}/`;
+  throw new ReplyNotUnderstoodError({
+    ...about,
+    reply,
+    expected: `a reply in which /${channelIn.source}/ finds a channel, or ${none} where none is closed`,
+  });
 }
 
 /**

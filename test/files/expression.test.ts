@@ -223,7 +223,9 @@ function expressionsOf(text: string, fileName: string): string[] {
     errors === 'none' || errors.kind !== 'queue' ? undefined : errors.clear,
     ...Object.values(readings).flatMap((reading) => {
       if (reading.kind === 'number') return [reading.pattern];
-      return reading.kind === 'flag' ? [reading.trueWhen, reading.falseWhen] : [reading.channelIn];
+      return reading.kind === 'flag'
+        ? [reading.trueWhen, reading.falseWhen]
+        : [reading.channelIn, reading.noneWhen];
     }),
   ];
   return all.flatMap((one) => (one === undefined ? [] : [one.source]));

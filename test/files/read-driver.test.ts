@@ -273,7 +273,19 @@ describe('a scanner', () => {
     });
   });
 
+  it('may say in a way of its own that none is closed', () => {
+    const text = scanner('{ ask: "CLOSED?", channel-in: "(?<value>[0-9]+)", none-when: "^NONE$" }');
+    expect(parseDriver(text, 's.yaml').readings['closed-channel']).toMatchObject({
+      channelIn: expression('(?<value>[0-9]+)'),
+      noneWhen: expression('^NONE$'),
+    });
+  });
+
   it.each([
+    [
+      '{ ask: "CLOSED?", true-when: "^1$", none-when: "^NONE$" }',
+      "8:76: readings.closed-channel.none-when: only a reading with 'channel-in' can be none",
+    ],
     [
       '{ ask: "CLOSED?", unit: V }',
       "8:29: readings.closed-channel: the closed-channel is a channel's number; give 'channel-in' in place of 'unit'",

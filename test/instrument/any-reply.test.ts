@@ -112,6 +112,7 @@ describe('whatever an instrument replies', () => {
           readChannel(text, { kind: 'channel', ask: [{ text: 'C?' }], channelIn }, about),
         );
         if (typeof channel === 'number') expect(Number.isSafeInteger(channel) && channel >= 0).toBe(true);
+        if (channel === null) expect(text.trim()).toMatch(/^(#\d+)?\s*\(\s*@\s*\)$/);
       }),
       { numRuns: 1000 },
     );

@@ -187,15 +187,52 @@ describe('the closed channel of a scanner', () => {
     ['(@101)', 101],
     [' (@7) ', 7],
     ['(@)', null],
-    ['', null],
-    ['nothing is closed', null],
+    [' ( @ ) ', null],
+    ['#13(@)', null],
+    ['#0(@)', null],
+    ['#14(@ )', null],
   ])('in "%s"', (reply, channel) => {
     expect(readChannel(reply, reading, about)).toBe(channel);
   });
 
-  it.each(['(@101,102)', '(@1234567)', `(@1)${' '.repeat(2000)}`])('is not in "%s"', (reply) => {
+  it.each([
+    '',
+    '0',
+    '1',
+    'nothing is closed',
+    '-113,"Undefined header"',
+    '(@)(@101)',
+    '(@101)(@)',
+    '(@',
+    '#3(@)',
+    '(@101,102)',
+    '(@1234567)',
+    `(@1)${' '.repeat(2000)}`,
+  ])('is not in "%s", which does not say that none is closed either', (reply) => {
     expect(() => readChannel(reply, reading, about)).toThrow(
       expect.objectContaining({ code: 'REPLY_NOT_UNDERSTOOD' }) as Error,
     );
+  });
+
+  it('is none where the reply looks as the driver says, and in no other way', () => {
+    const inWords = {
+      ...reading,
+      channelIn: expression('(?<value>[0-9]+)'),
+      noneWhen: expression('^(NONE|0)$'),
+    };
+    expect(readChannel('NONE', inWords, about)).toBeNull();
+    expect(readChannel('0', inWords, about)).toBeNull();
+    expect(readChannel('101', inWords, about)).toBe(101);
+    expect(() => readChannel('(@)', inWords, about)).toThrow(
+      expect.objectContaining({
+        code: 'REPLY_NOT_UNDERSTOOD',
+        message: expect.stringContaining('or /^(NONE|0)$/ where none is closed') as string,
+      }) as Error,
+    );
+  });
+
+  it('is never taken from the length of a block that holds an empty list', () => {
+    const anyNumber = { ...reading, channelIn: expression('(?<value>[0-9]+)') };
+    expect(readChannel('#13(@)', anyNumber, about)).toBeNull();
   });
 });
