@@ -20,6 +20,17 @@ export async function tellMakeSafeAfresh(dialogue: Dialogue, driver: Driver): Pr
 }
 
 /**
+ * Tells messages at once, where their driver waits between them; whether it does. An instrument that does not say
+ * that it is ready must not keep what switches it off from being told.
+ * @throws ConnectionLostError
+ */
+export async function tellBeforeWaiting(dialogue: Dialogue, messages: readonly Message[]): Promise<boolean> {
+  const waits = messages.slice(0, -1).some(({ untilReady }) => untilReady === true);
+  if (waits) await tellUnasked(dialogue, messages);
+  return waits;
+}
+
+/**
  * Puts an instrument in remote, over a line of which nothing is known: what is told before that it may not
  * hear, nor answer.
  * @throws ConnectionLostError

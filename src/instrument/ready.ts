@@ -1,26 +1,21 @@
-import type { Clock } from '../clock/clock.js';
-import type { Driver, Readiness } from '../files/driver.js';
-import type { Dialogue } from './dialogue.js';
+import type { Readiness } from '../files/driver.js';
 import type { DriverPart } from './driver-part.js';
 import { NotInDriverError, NotReadyError } from './instrument-errors.js';
 import type { About } from './reading.js';
 import { InstrumentSilentError } from './reply-errors.js';
 import { readBits } from './status-bits.js';
+import type { Talk } from './tell.js';
 import { understood } from './understood.js';
 
 /**
  * Asks an instrument that was told a message whether it has done it, until it says so. One answers at once and
  * is asked again after each pause; another answers only when it is done, so an answer may take all the time
  * that there is.
- * @throws NotReadyError when that is over
+ * @throws NotReadyError when that is over; the signal's reason when it comes between two questions
  * @throws ReplyNotUnderstoodError, and the rest of what `Dialogue.ask` throws
  */
 export async function untilReady(
-  {
-    dialogue,
-    driver,
-    clock,
-  }: { readonly dialogue: Dialogue; readonly driver: Driver; readonly clock: Clock },
+  { dialogue, driver, clock, signal }: Talk,
   { told, part }: { readonly told: string; readonly part: DriverPart },
 ): Promise<void> {
   const { ready, wire, name } = driver;
@@ -46,7 +41,7 @@ export async function untilReady(
     if (understood(dialogue, () => saysReady(answer, ready.when, about))) return;
     if (clock.now() + every >= end)
       throw new NotReadyError({ address, told, question: ask, answer, within, part });
-    await clock.sleep(every);
+    await clock.sleep(every, signal);
   }
 }
 

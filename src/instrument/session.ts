@@ -6,12 +6,12 @@ import { Dialogue } from './dialogue.js';
 import type { DriverPart } from './driver-part.js';
 import { isIdentityFor } from './identity.js';
 import { NotInDriverError, WrongInstrumentError } from './instrument-errors.js';
-import { tellLocal, tellMakeSafeAfresh, tellRemote } from './make-safe.js';
+import { tellBeforeWaiting, tellLocal, tellMakeSafeAfresh, tellRemote } from './make-safe.js';
 import { fillMessage, type OperationValues } from './message.js';
 import type { OnNotice } from './notice.js';
 import { Readings } from './readings.js';
 import type { Measurement } from './scpi-number.js';
-import { clearErrors, type Talk, tellAndCheck } from './tell.js';
+import { clearErrors, type Talk, tell, tellAndCheck } from './tell.js';
 
 export interface SessionParts {
   readonly role: Role;
@@ -27,23 +27,32 @@ export interface SessionParts {
   readonly first?: 'identity' | 'make-safe';
   /** Who must answer, where that is known from before: nobody else will do. */
   readonly identity?: string;
-  /** Aborted when the run must stop: a reading is then no longer waited for until it is due. */
+  /**
+   * Aborted when the run must stop: then nothing is waited for any more but answers, and what belongs to
+   * switching off.
+   */
   readonly signal?: AbortSignal | undefined;
 }
 
 /** After these a meter measures something else, or as it likes; what it was told of its ranges is void. */
 const changesRanges = /^(?:make-safe|measure-.*|.*-mode)$/;
 
+/** These are told before anything is waited for, and a wish to stop does not cut them short. */
+const switchesOff = /^(?:make-safe|(?:in|out)put-off|open-all)$/;
+
 /** What is said to an instrument over one connection, as its driver says it. It takes no turns. */
 export class Session {
   /** What it answered to the question who it is. */
   readonly identity: string;
   readonly #talk: Talk;
+  /** Of what is due after a wish to stop, too. */
+  readonly #patient: Talk;
   readonly #readings: Readings;
 
   private constructor(talk: Talk, identity: string) {
     this.identity = identity;
     this.#talk = talk;
+    this.#patient = { ...talk, signal: undefined };
     this.#readings = new Readings(talk);
   }
 
@@ -89,7 +98,8 @@ export class Session {
 
   /**
    * Sends the messages of an operation, all of them, then asks about errors where there is a way to.
-   * @throws InstrumentComplainedError with what it reports; NotReadyError
+   * @throws InstrumentComplainedError with what it reports; NotReadyError; the signal's reason instead of waiting
+   * until it is ready, where nothing is switched off
    * @throws NotInDriverError; RangeError when a value that the messages need is missing
    */
   async perform(operation: string, values: OperationValues = {}): Promise<void> {
@@ -99,7 +109,13 @@ export class Session {
       throw new NotInDriverError({ driver: name, what: `operation "${operation}"` });
     const filled = messages.map((message) => ({ ...message, text: fillMessage(message.text, values) }));
     if (changesRanges.test(operation)) this.#readings.forgetRanges();
-    await tellAndCheck(this.#talk, filled, this.#part('operations', operation));
+    const part = this.#part('operations', operation);
+    if (!switchesOff.test(operation)) return tellAndCheck(this.#talk, filled, part);
+    if (!(await tellBeforeWaiting(this.#talk.dialogue, filled)))
+      return tellAndCheck(this.#patient, filled, part);
+    await tell(this.#patient, filled, part);
+    // What came too soon the first time was told again: whether it is off is read from it.
+    await clearErrors(this.#patient);
   }
 
   /**
@@ -112,7 +128,8 @@ export class Session {
   }
 
   /**
-   * A yes or no.
+   * A yes or no. Where a channel is chosen first, whether anything was wrong is asked after it: what another
+   * channel says must not be believed.
    * @throws as `read`; also when the reply says neither
    */
   flag(reading: string): Promise<boolean> {
@@ -144,7 +161,7 @@ export class Session {
    */
   async release(): Promise<void> {
     try {
-      await tellAndCheck(this.#talk, this.#talk.driver.release, this.#part('release'));
+      await tellAndCheck(this.#patient, this.#talk.driver.release, this.#part('release'));
     } finally {
       await this.handBack();
     }

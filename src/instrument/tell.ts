@@ -69,13 +69,20 @@ export async function tellAndCheck(
     await tell(talk, messages, part);
     const errors = await seriousErrors(talk);
     if (errors.length === 0) return;
-    if (pause === undefined || !errors.every((error) => fateIn(talk.driver, error) === 'again')) {
-      await tellAfterwards(talk);
-      throw complaint(talk, errors, messages, part);
-    }
+    if (pause === undefined || !errors.every((error) => fateIn(talk.driver, error) === 'again'))
+      return complain(talk, errors, messages, part);
     for (const entry of errors) notice(talk, { kind: 'told-again', entry });
     await talk.clock.sleep(pause);
   }
+}
+
+/**
+ * Asks whether anything was wrong with messages that are told already, where there is a way to ask.
+ * @throws InstrumentComplainedError, once the instrument was told what clears its error
+ */
+export async function check(talk: Talk, messages: readonly Message[], part: DriverPart): Promise<void> {
+  const errors = await seriousErrors(talk);
+  if (errors.length > 0) await complain(talk, errors, messages, part);
 }
 
 /**
@@ -102,10 +109,17 @@ function fateIn({ errors }: Driver, entry: ReportedError): Fate {
   return errors === 'none' ? 'error' : fateOf(entry, errors);
 }
 
-/** What is the matter is known already; that the remedy fails as well changes nothing about it. */
-async function tellAfterwards({ dialogue, driver: { errors } }: Talk): Promise<void> {
-  if (errors === 'none') return;
-  for (const { text, rest } of errors.afterwards) await dialogue.tell(text, rest).catch(() => undefined);
+async function complain(
+  talk: Talk,
+  entries: readonly ReportedError[],
+  messages: readonly Message[],
+  part: DriverPart,
+): Promise<never> {
+  const { dialogue, driver } = talk;
+  const afterwards = driver.errors === 'none' ? [] : driver.errors.afterwards;
+  // What is the matter is known already; that the remedy fails as well changes nothing about it.
+  for (const { text, rest } of afterwards) await dialogue.tell(text, rest).catch(() => undefined);
+  throw complaint(talk, entries, messages, part);
 }
 
 function complaint(
