@@ -154,8 +154,12 @@ export class Line {
   /** Waits for what is due after the last message. Where that does not come, it goes on without. */
   async #untilSettled(patience: Seconds): Promise<void> {
     const end = Math.max(this.#quietSince, this.#deafUntil) + patience;
+    let afterwards = 0;
     while (!this.#sideTalk.isSettled(this.#reader)) {
-      const bytes = await this.#connection.receive(Math.max(0, end - this.#clock.now()));
+      const left = Math.max(0, end - this.#clock.now());
+      // It may have come long ago, and nobody has looked; whoever does not stop talking is not heard out.
+      const bytes = afterwards > mostUnasked ? undefined : await this.#connection.receive(left);
+      if (left === 0) afterwards += bytes?.length ?? 0;
       if (bytes === undefined) {
         const missing = this.#sideTalk.giveUp();
         this.#missing ??= missing;

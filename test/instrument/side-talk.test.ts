@@ -170,6 +170,34 @@ describe('an instrument that repeats each message', () => {
   });
 });
 
+it('an instrument that never stops talking is told to be safe all the same', async () => {
+  const clock = new VirtualClock(new Date(0));
+  const sent: string[] = [];
+  const noise = Buffer.alloc(4096, '#');
+  let received = 0;
+  const dialogue = new Dialogue({
+    connection: {
+      address: 'virtual:',
+      write: (bytes) => Promise.resolve(void sent.push(Buffer.from(bytes).toString().trimEnd())),
+      receive: async (within) => {
+        received += noise.length;
+        // A test that does not end tells nobody why.
+        if (received > 2 ** 26) throw new Error('what it says is waited out for ever');
+        await clock.sleep(Math.min(within, 0.001));
+        return noise;
+      },
+      close: () => Promise.resolve(),
+    },
+    wire: { sendEnd: '\n', replyEnd: '\n', gap: 0, timeout, echo: true },
+    clock,
+    identify: '*IDN?',
+  });
+  await dialogue.tell('CURR 0');
+  await dialogue.tell('INP OFF');
+  expect(sent).toEqual(['CURR 0', 'INP OFF']);
+  expect(clock.now()).toBeLessThan(1.1 * timeout);
+});
+
 describe('an instrument that sends a prompt', () => {
   const prompting = mannerly({ 'VOLT?': '15.1' }, { prompt: '> ' });
   const silently =
