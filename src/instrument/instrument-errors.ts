@@ -87,13 +87,14 @@ export class WrongInstrumentError extends RailproofError {
   readonly driver: string;
   readonly identity: string;
 
-  /** `before`: who answered at that address earlier, and must again. */
+  /** `before`: who answered at that address earlier, and must again; `isEcho`: the question came back. */
   constructor(facts: {
     address: string;
     role: string;
     driver: string;
     identity: string;
     before?: string | undefined;
+    isEcho?: boolean;
   }) {
     const identity = visible(facts.identity);
     super(
@@ -102,7 +103,9 @@ export class WrongInstrumentError extends RailproofError {
         : `${facts.address} answers as "${identity}" and answered as "${visible(facts.before)}" before`,
       {
         advice:
-          'Are two cables or two lines of the bench file swapped? Is the driver the right one, and the baud rate?',
+          facts.isEcho === true
+            ? 'It repeats what it is told. Say so in its driver, wire: { echo: true }, or switch its echo off.'
+            : 'Are two cables or two lines of the bench file swapped? Is the driver the right one, and the baud rate?',
       },
     );
     this.address = facts.address;

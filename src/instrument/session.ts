@@ -203,7 +203,14 @@ async function identityOf(
     identity = await dialogue.ask(driver.identify).catch(() => identity);
   }
   if (isIdentity(identity)) return identity.trim();
-  throw new WrongInstrumentError({ address: dialogue.address, role, driver: driver.name, identity, before });
+  throw new WrongInstrumentError({
+    address: dialogue.address,
+    role,
+    driver: driver.name,
+    identity,
+    before,
+    isEcho: identity.trim() === driver.identify.trim(),
+  });
 }
 
 /** Of one that is not ready yet, and is not asked about it before it is known who it is. */

@@ -64,6 +64,22 @@ describe('opening an instrument', () => {
     ).rejects.toMatchObject({ code: 'WRONG_INSTRUMENT', exitCode: 69, role: 'load', driver: 'toy-load' });
   });
 
+  it('takes no echo that its driver does not tell of for a name, and later for an answer', async () => {
+    const toy = toyLoad();
+    const clock = new VirtualClock(new Date(0));
+    // It does nothing that it is told, and repeats it all, a moment later.
+    const connection = new VirtualLine(clock, (message, at) => [
+      { at: at + 0.005, bytes: Buffer.from(`${message}\r\n`) },
+      ...(message.endsWith('?') ? toy.react(message, at + 0.005) : []),
+    ]);
+    const driver: Driver = { ...toyDriver, errors: 'none' };
+    await expect(Instrument.open({ role: 'load', driver, connection, clock })).rejects.toMatchObject({
+      code: 'WRONG_INSTRUMENT',
+      identity: '*IDN?',
+      advice: expect.stringContaining('echo: true') as string,
+    });
+  });
+
   it('takes any name where the driver asks for none', async () => {
     const { instrument } = await opened({ replies: { '*IDN?': ' SHED,GREEN BOX,0,0 ' } });
     expect(instrument.identity).toBe('SHED,GREEN BOX,0,0');
