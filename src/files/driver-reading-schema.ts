@@ -104,6 +104,8 @@ export const readingSchema = z
       const before = value.ranges?.[index - 1]?.['up-to'];
       if (value.unit !== undefined && most.dimension !== value.unit.dimension) {
         complain(['ranges', index, 'up-to'], "the unit is not that of the reading's unit");
+      } else if (!(most.value > 0)) {
+        complain(['ranges', index, 'up-to'], 'a range holds more than nothing');
       } else if (before !== undefined && !(most.value > before.value)) {
         complain(['ranges', index, 'up-to'], 'the smallest range comes first');
       }

@@ -144,6 +144,16 @@ describe('one mistake is one line, at its place', () => {
       "20:75: readings.voltage.ranges.0.select.0: unknown placeholder '{channel}'; none is filled in here",
     ],
     [
+      'unit: V ',
+      'unit: V, ranges: [{ up-to: -2 V, select: ["RANG 2"] }] ',
+      '20:60: readings.voltage.ranges.0.up-to: a range holds more than nothing',
+    ],
+    [
+      'unit: V ',
+      'unit: V, ranges: [{ up-to: 20 V, select: ["RANG 20"] }, { up-to: 2 V, select: ["RANG 2"] }] ',
+      '20:98: readings.voltage.ranges.1.up-to: the smallest range comes first',
+    ],
+    [
       errorQueue,
       '{ ask: "SYST:ERR?", clear: "^0", afterwards: ["*CLS {channel}"] }',
       "7:55: errors.afterwards.0: unknown placeholder '{channel}'; none is filled in here",
