@@ -1,4 +1,4 @@
-import { type Document, isMap, isSeq, parseDocument, Scalar, type YAMLMap } from 'yaml';
+import { type Document, isMap, isSeq, parseDocument, Scalar, visit, type YAMLMap, type YAMLSeq } from 'yaml';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Seconds } from '../quantity/quantity.js';
 import type { Wire } from './driver.js';
@@ -19,8 +19,8 @@ export interface Adaptation {
 }
 
 /**
- * The text of a driver file with some of its values changed, and with its comments. Blanks between words may
- * not be where they were.
+ * The text of a driver file with some of its values changed, and with its comments. A line that is written as
+ * those of the shipped drivers are stays as it was.
  */
 export function adaptedDriver(text: string, adaptation: Adaptation): string {
   const document = parseDocument(text);
@@ -39,7 +39,20 @@ export function adaptedDriver(text: string, adaptation: Adaptation): string {
   if (settling !== undefined) document.set('settling', formatQuantity(settling, 'time'));
   for (const [operation, rest] of Object.entries(rests)) letRest(document, operation, rest);
   addDialogue(document, adaptation);
+  visit(document, {
+    Collection: (_, node) => {
+      padAsDriversDo(node);
+    },
+  });
   return document.toString({ lineWidth: 0 });
+}
+
+/** `{ send: "INP ON" }` has blanks inside its brackets, `["INP ON"]` none; the library knows one way for both. */
+function padAsDriversDo(node: YAMLMap | YAMLSeq): void {
+  const flowCollectionPadding = isMap(node) ? ' ' : '';
+  const written = node.toString.bind(node);
+  node.toString = (context, ...others) =>
+    written(context && { ...context, flowCollectionPadding }, ...others);
 }
 
 function letRest(document: Document, operation: string, rest: Seconds): void {

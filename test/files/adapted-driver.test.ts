@@ -1,4 +1,4 @@
-import { readFileSync } from 'node:fs';
+import { readdirSync, readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { type Adaptation, adaptedDriver } from '../../src/files/adapted-driver.js';
 import type { Exchange } from '../../src/files/driver-dialogue.js';
@@ -9,6 +9,8 @@ const nothing: Adaptation = { name: 'my-load', wire: {}, rests: {}, dialogue: []
 const adapted = (change: Partial<Adaptation>, text = driverExample): string =>
   adaptedDriver(text, { ...nothing, ...change });
 
+const drivers = new URL('../../drivers/', import.meta.url);
+
 describe('an adapted driver', () => {
   it('is the same but for its name where nothing else changes', () => {
     const before = parseDriver(driverExample, 'load.yaml');
@@ -16,11 +18,24 @@ describe('an adapted driver', () => {
   });
 
   it('keeps the comments, and lets a line be long', () => {
-    const text = readFileSync(new URL('../../drivers/load-remote-scpi.yaml', import.meta.url), 'utf8');
+    const text = readFileSync(new URL('load-remote-scpi.yaml', drivers), 'utf8');
     const comments = text.split('\n').filter((line) => line.trim().startsWith('#'));
     const lines = adapted({}, text).split('\n');
     expect(comments.length).toBeGreaterThan(5);
     for (const comment of comments) expect(lines).toContain(comment);
+  });
+
+  const shipped = readdirSync(drivers).filter((file) => file.endsWith('.yaml'));
+  it.each(shipped)('differs from %s only in what was changed', (file) => {
+    const text = readFileSync(new URL(file, drivers), 'utf8');
+    const lines = (changed: string): string[] => changed.replace(/ +#/g, ' #').split('\n');
+    const before = lines(text);
+    expect(lines(adapted({}, text)).flatMap((line, at) => (line === before[at] ? [] : [line]))).toEqual([
+      'name: my-load',
+    ]);
+    const wired = lines(adapted({ wire: { gap: 0.123 } }, text));
+    const changed = wired.filter((line, at) => line !== before[at]);
+    expect(changed).toEqual(['name: my-load', expect.stringMatching(/\bgap: 123 ms\b/)]);
   });
 
   it('speaks in the way that it is told to', () => {
@@ -40,7 +55,7 @@ describe('an adapted driver', () => {
   it('lets an operation rest, whether or not it had a rest before', () => {
     const before = driverExample.replace('["FUNC VOLT"]', '[{ send: "FUNC VOLT", rest: 10 ms }]');
     const text = adapted({ rests: { 'current-mode': 0.5, 'voltage-mode': 0.2 } }, before);
-    expect(text).toContain('current-mode: [ { send: "FUNC CURR", rest: 500 ms } ]');
+    expect(text).toContain('current-mode: [{ send: "FUNC CURR", rest: 500 ms }]');
     expect(parseDriver(text, 'my-load.yaml').operations).toMatchObject({
       'current-mode': [{ text: 'FUNC CURR', rest: 0.5 }],
       'voltage-mode': [{ text: 'FUNC VOLT', rest: 0.2 }],
