@@ -28,17 +28,21 @@ export async function matchOut(
   const connection = await connectors(clock)(address, anyOf(drivers), 'instrument');
   const stop = stopOnSignals(streams);
   stop.hurry.addEventListener('abort', () => void connection.close(), { once: true });
+  const answered: string[] = [];
   try {
     streams.stderr.write(`${printable(connection.address)}: asking what does no harm; this takes a while\n`);
     const match = await matchDrivers({
       ...{ drivers, connection, clock, signal: stop.signal },
       onAnswer: (question, answer) => {
+        if (answer !== undefined) answered.push(question);
         if (!wanted.json) streams.stdout.write(answerText(question, answer));
       },
     });
     stop.signal.throwIfAborted();
     streams.stdout.write(
-      wanted.json ? matchAsJson(connection.address, match) : matchText(connection.address, match, streams),
+      wanted.json
+        ? matchAsJson(connection.address, match)
+        : matchText(connection.address, match, answered, streams),
     );
     if (match.kind === 'silent') return exitCodes.instrument;
     return match.families.length > 0 ? exitCodes.conforms : exitCodes.doesNotConform;
@@ -60,7 +64,7 @@ function answerText(question: string, answer: string | undefined): string {
   return `  ${visible(question).padEnd(18)}  ${heard}\n`;
 }
 
-function matchText(address: string, match: Match, { stdout }: Streams): string {
+function matchText(address: string, match: Match, answered: readonly string[], { stdout }: Streams): string {
   if (match.kind === 'silent') {
     return fitted(
       `Nothing answers the question who it is, with any end of line. Is the instrument switched on, is remote ` +
@@ -83,7 +87,7 @@ function matchText(address: string, match: Match, { stdout }: Streams): string {
     '',
     `It calls itself "${visible(identity)}"; ${ways.join('; ')}.`,
     ...(best === undefined
-      ? ['No shipped family fits. Write a driver of your own: drivers/README.md goes through it.']
+      ? ['', ...ofNoFamily(address, answered)]
       : [
           '',
           ...alignTable(families.slice(0, 5).map(rowOf), ['left', 'left', 'right', 'left']),
@@ -95,6 +99,20 @@ function matchText(address: string, match: Match, { stdout }: Streams): string {
     'Nothing was told and nothing switched; the errors in its queue are gone with ours.',
   ];
   return `${lines.map((line) => (line.startsWith('  ') ? line : fitted(line, stdout.columns))).join('\n')}\n`;
+}
+
+/** It speaks, and in words of its own: then the nearest family is what to begin with. */
+function ofNoFamily(address: string, answered: readonly string[]): string[] {
+  const known =
+    answered.length === 0
+      ? 'none of it was answered'
+      : `only ${answered.join(', ')} ${answered.length === 1 ? 'was' : 'were'} answered`;
+  return [
+    `No shipped family fits: of all that was asked ${known}.`,
+    'Take the one whose words are nearest (drivers/README.md says what each assumes), write its file with --try, ' +
+      'mend that, and try it again:',
+    `  railproof drivers --try load-short-scpi --connection ${printable(address)} --write my-load`,
+  ];
 }
 
 function rowOf({ driver, role, understood, asked }: FamilyMatch): string[] {
@@ -118,7 +136,9 @@ function reasons(best: FamilyMatch, second: FamilyMatch | undefined): string[] {
   else if (second.score === best.score)
     lines.push(`${second.driver} fits as well; what was asked cannot tell the two apart, --try can.`);
   else if (worse.length > 0)
-    lines.push(`${second.driver} comes second: ${worse.join(', ')} was not understood.`);
+    lines.push(
+      `${second.driver} comes second: ${worse.join(', ')} ${worse.length === 1 ? 'was' : 'were'} not understood.`,
+    );
   else lines.push(`${second.driver} comes second: it asks less, so that it proves less.`);
   return lines;
 }

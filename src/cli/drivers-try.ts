@@ -9,7 +9,9 @@ import type { TraceEntry } from '../instrument/dialogue-record.js';
 import type { Switching } from '../instrument/trial-switching.js';
 import { type Trial, tryDriver, type TrialResult } from '../instrument/trial.js';
 import { printable } from '../quantity/printable.js';
+import { StoppedByOperator } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
+import { fitted } from '../run/word-wrap.js';
 import { connectors } from './connectors.js';
 import { atDriverLine } from './driver-line.js';
 import { errorText } from './error-text.js';
@@ -70,7 +72,7 @@ export async function tryOut(wanted: TryWanted, streams: Streams): Promise<ExitC
       },
     });
     trial = done;
-    if (done.pace && done.proposal) say(paceText(driver, done.pace, done.proposal));
+    if (done.pace && done.proposal) say(paceText(driver, done.pace, done.proposal, streams.stdout.columns));
     if (files && done.meeting.kind === 'answered') {
       await writeAdapted(files, file, { address: connection.address, trial: done });
       written.push(files.driver);
@@ -107,7 +109,15 @@ async function agree(
   const operator = new TerminalOperator({ input, output, yes: false, interrupted: stop.wish });
   if (!operator.present) return false;
   const text = `${question}\nType yes to try it; anything else leaves it out.`;
-  return /^y(es)?$/i.test(await operator.ask({ name: 'switch-on', text, answer: 'text' }, stop.signal));
+  const answer = await operator
+    .ask({ name: 'switch-on', text, answer: 'text' }, stop.signal)
+    .catch((error: unknown) => {
+      // Whoever says no more has not said yes; the trial ends as it should, with what it has come to.
+      if (!(error instanceof StoppedByOperator)) throw error;
+      output.write('\n');
+      return '';
+    });
+  return /^y(es)?$/i.test(answer);
 }
 
 function requireChannel({ name, channels }: Driver, channel: number | undefined): void {
@@ -129,7 +139,8 @@ function tell(
   const off = ending.how !== 'broken-off' && proof?.verdict === 'understood';
   const mayBeOn = { load: loadMayStillBeOn, source: sourceMayStillBeOn }[driver.role as string];
   if (mayBeOn !== undefined) {
-    stderr.write(off ? `The ${driver.role} is off; it was read back.\n` : `${mayBeOn}\n`);
+    const lastWords = off ? `The ${driver.role} is off; it was read back.` : mayBeOn;
+    stderr.write(`${fitted(lastWords, stderr.columns)}\n`);
   }
   if (ending.how !== 'as-it-should') return exitCodeOf(ending.error);
   if (mayBeOn !== undefined && !off) return exitCodes.instrument;

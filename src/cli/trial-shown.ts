@@ -9,7 +9,7 @@ import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { alignTable } from '../report/align.js';
 import { jsonText } from '../report/json-text.js';
-import { wordWrap } from '../run/word-wrap.js';
+import { fitted, wordWrap } from '../run/word-wrap.js';
 
 /** Where nobody said how wide the screen is. */
 const usualWidth = 80;
@@ -62,7 +62,7 @@ export function meetingText({ remarks }: Meeting): string {
 }
 
 /** How fast it is, and what a driver file had better say. */
-export function paceText(driver: Driver, pace: Pace, proposal: Proposal): string {
+export function paceText(driver: Driver, pace: Pace, proposal: Proposal, columns = usualWidth): string {
   const trips = pace.roundTrips.map(({ question, times }) => [
     ...[indent + visible(question), 'answers in', milliseconds(median(times))],
     ...['at most', milliseconds(Math.max(...times))],
@@ -77,7 +77,7 @@ export function paceText(driver: Driver, pace: Pace, proposal: Proposal): string
     ...alignTable(needs, ['left', 'left']),
     '\nWhat its driver file should say',
     ...alignTable(proposalRows(driver, proposal), ['left', 'left', 'left']),
-    ...unseen[driver.role].map((line) => indent + line),
+    ...unseen[driver.role].map((text) => fitted(text, columns, { indent })),
     '',
   ].join('\n');
 }
@@ -85,13 +85,13 @@ export function paceText(driver: Driver, pace: Pace, proposal: Proposal): string
 /** What none of this can show. */
 const unseen: Readonly<Record<Driver['role'], readonly string[]>> = {
   load: [
-    'How long a reading needs to settle after a change of current does not show with',
-    'the input off. That is in the manual, or in the first points of a run.',
+    'How long a reading needs to settle after a change of current does not show with the input off. That is in ' +
+      'the manual, or in the first points of a run.',
   ],
   source: ['How long its voltage needs to settle does not show with the output off.'],
   meter: [
-    'How long a reading needs to settle after a change of what is measured does not',
-    'show: an answer that comes in time may still be a mean over what was before.',
+    'How long a reading needs to settle after a change of what is measured does not show: an answer that ' +
+      'comes in time may still be a mean over what was before.',
   ],
   scanner: ['How long a relay bounces, and the meter behind it settles, does not show here.'],
   thermometer: [],
@@ -131,9 +131,13 @@ function milliseconds(time: Seconds): string {
 }
 
 export function countLine(results: readonly TrialResult[]): string {
-  const understood = results.filter(({ verdict }) => verdict === 'understood').length;
-  const sent = results.filter(({ verdict }) => verdict !== 'not-sent').length;
-  return `${understood} of ${sent} messages understood\n`;
+  const count = (verdict: TrialResult['verdict']): number =>
+    results.filter((result) => result.verdict === verdict).length;
+  const others = (['refused', 'silent', 'unclear'] as const).flatMap((verdict) =>
+    count(verdict) === 0 ? [] : [`, ${count(verdict)} ${verdict}`],
+  );
+  const sent = results.length - count('not-sent');
+  return `${count('understood')} of ${sent} messages understood${others.join('')}\n`;
 }
 
 /** One JSON object, of a trial that was broken off with what there is. */

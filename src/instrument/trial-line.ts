@@ -18,6 +18,9 @@ import { tracedConnection } from './traced-connection.js';
 import type { TrialResult } from './trial-result.js';
 import { visible } from './visible.js';
 
+/** Nobody knows yet how fast it takes what it is told. */
+export const cautiousGap: Seconds = 0.1;
+
 /** What came of a message, but for the time that it took and the bytes that went over the line. */
 export type Answer = Pick<TrialResult, 'received' | 'verdict' | 'detail'> & {
   readonly exchanges?: readonly Exchange[];
@@ -56,6 +59,12 @@ export class TrialLine {
     return { driver, clock, dialogue: new Dialogue({ connection, wire, clock, identify, isIdentity }) };
   }
 
+  /** As `talk`, once so long has passed that the first message of it comes to one that listens again. */
+  async talkAnew(wire: Wire): Promise<Talk> {
+    await this.clock.sleep(cautiousGap);
+    return this.talk(wire);
+  }
+
   /** How much has been noted so far. */
   get mark(): number {
     return this.#noted.length;
@@ -91,6 +100,24 @@ export class TrialLine {
   }
 }
 
+/** As the error has it, without what it says after it. */
+export function expectedOf({ expected }: ReplyNotUnderstoodError): string {
+  return `expected ${expected.replace(/,$/, '')}`;
+}
+
+/** What was told just before may have made it deaf for a moment: only twice unheard is silence. */
+export async function atLast<Result>(question: () => Promise<Result>): Promise<Result> {
+  return question().catch((error: unknown) => {
+    if (isWithoutAnswer(error)) return question();
+    throw error;
+  });
+}
+
+/** Not a byte came. */
+export function isWithoutAnswer(error: unknown): boolean {
+  return error instanceof InstrumentSilentError && error.begun === '';
+}
+
 function failed(error: unknown): Answer {
   if (error instanceof InstrumentSilentError) {
     const received = error.begun === '' ? undefined : error.begun;
@@ -105,7 +132,7 @@ function failed(error: unknown): Answer {
     return { received: error.answer, verdict: 'silent', detail };
   }
   if (error instanceof ReplyNotUnderstoodError) {
-    return { received: error.reply, verdict: 'unclear', detail: `expected ${error.expected}` };
+    return { received: error.reply, verdict: 'unclear', detail: expectedOf(error) };
   }
   if (error instanceof ReplyTooLongError) {
     const detail = `more than ${error.limit} bytes without an end`;

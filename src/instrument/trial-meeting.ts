@@ -2,7 +2,7 @@ import type { Message, Wire } from '../files/driver.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { firstWords, type FirstWords } from './first-words.js';
 import { fillMessage } from './message.js';
-import type { TrialLine } from './trial-line.js';
+import { cautiousGap, type TrialLine } from './trial-line.js';
 import { visible } from './visible.js';
 
 /** How an instrument turned out to be spoken to. */
@@ -13,8 +13,6 @@ export interface Meeting {
   readonly remarks: readonly string[];
 }
 
-/** Nobody knows yet how fast it takes what it is told. */
-export const cautiousGap: Seconds = 0.1;
 /** So long nothing comes any more once all has come. */
 const quiet: Seconds = 0.25;
 const mostHeard = 4096;

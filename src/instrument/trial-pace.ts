@@ -5,8 +5,7 @@ import { harmlessValues, whyLeftOut } from './harmless.js';
 import { fillMessage } from './message.js';
 import { isGap } from './gap.js';
 import { ask, type Talk } from './tell.js';
-import type { TrialLine } from './trial-line.js';
-import { cautiousGap } from './trial-meeting.js';
+import { cautiousGap, type TrialLine } from './trial-line.js';
 
 /** How long a question takes to be answered, asked several times over. */
 export interface RoundTrip {
@@ -86,7 +85,7 @@ export class TrialPace {
 
   async #roundTrip(question: string, once: (talk: Talk) => Promise<unknown>): Promise<RoundTrip> {
     const times: Seconds[] = [];
-    const talk = this.#line.talk(this.#wire);
+    const talk = await this.#line.talkAnew(this.#wire);
     for (let turn = 0; turn < (Math.max(0, ...times) > slow ? repeatsOfSlow : repeats); turn++) {
       const mark = this.#line.mark;
       const answered = await orUnheard(once(talk));
@@ -131,7 +130,7 @@ export class TrialPace {
   ): Promise<Seconds | undefined> {
     const { identify } = this.#line.driver;
     let slowest = 0;
-    const { dialogue } = this.#line.talk({ ...this.#wire, gap: pause, timeout });
+    const { dialogue } = await this.#line.talkAnew({ ...this.#wire, gap: pause, timeout });
     for (let round = 0; round < rounds; round++) {
       for (const { text } of messages) await dialogue.tell(text);
       const mark = this.#line.mark;

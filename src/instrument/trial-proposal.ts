@@ -1,4 +1,4 @@
-import type { Driver } from '../files/driver.js';
+import type { Driver, Message } from '../files/driver.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { pauses, type Need, type OperationNeed, type RoundTrip } from './trial-pace.js';
 
@@ -50,6 +50,21 @@ export function proposalFor({ wire, settling, operations }: Driver, pace: Pace):
     settling: Math.max(settling, roundedUp(Math.max(0, ...lates))),
     rests: Object.fromEntries(rests),
   };
+}
+
+/** A driver whose operations end in these rests. */
+export function withRests(driver: Driver, rests: Proposal['rests']): Driver {
+  const operations = Object.entries(driver.operations).map(
+    ([operation, messages]): [string, readonly Message[]] => {
+      const rest = rests[operation];
+      const last = messages.length - 1;
+      return [
+        operation,
+        rest === undefined ? messages : messages.map((each, at) => (at === last ? { ...each, rest } : each)),
+      ];
+    },
+  );
+  return { ...driver, operations: Object.fromEntries(operations) };
 }
 
 /** The next of 1, 2 or 5 and zeros, in milliseconds; 0 stays 0. */

@@ -1,4 +1,5 @@
 import type { Driver } from '../files/driver.js';
+import type { Pace } from './trial-proposal.js';
 import type { TrialResult } from './trial-result.js';
 
 /** An operation that switches on, what must have been understood before it is tried, and what says that it is on. */
@@ -31,13 +32,25 @@ const switchings: Readonly<Partial<Record<Driver['role'], Switching>>> = {
   },
 };
 
-/** What there is to switch on, where all that must go before has been understood. */
-export function switchingOf(driver: Driver, results: readonly TrialResult[]): Switching | undefined {
+/**
+ * What there is to switch on, where all that must go before has been understood, and it is known how long the
+ * instrument must be left alone after each of them: what sets it to nothing must not come too soon.
+ */
+export function switchingOf(
+  driver: Driver,
+  results: readonly TrialResult[],
+  { afterOperations }: Pick<Pace, 'afterOperations'>,
+): Switching | undefined {
   const switching = switchings[driver.role];
   if (switching === undefined) return undefined;
   const ready = [...switching.first, switching.off].every((operation) => {
     const told = results.filter(({ part, name }) => part === 'operation' && name === operation);
-    return told.length > 0 && told.every(({ verdict }) => verdict === 'understood' || verdict === 'unclear');
+    const isDeaf = afterOperations.some((each) => each.operation === operation && each.pause === undefined);
+    return (
+      !isDeaf &&
+      told.length > 0 &&
+      told.every(({ verdict }) => verdict === 'understood' || verdict === 'unclear')
+    );
   });
   return ready ? switching : undefined;
 }

@@ -1,20 +1,18 @@
-import type { Driver, DriverReading, Message, Wire } from '../files/driver.js';
-import type { Exchange } from '../files/driver-dialogue.js';
-import { meaningText } from '../files/driver-dialogue-text.js';
 import { placeholderOf } from '../files/driver-checks.js';
+import type { Exchange } from '../files/driver-dialogue.js';
+import type { Driver, DriverReading, Message, Wire } from '../files/driver.js';
 import type { DriverPart } from './driver-part.js';
-import { fateOf, readErrors, type ReportedError } from './error-report.js';
 import { harmlessValues, whyLeftOut } from './harmless.js';
 import { isIdentityFor } from './identity.js';
 import { tellMakeSafe } from './make-safe.js';
 import { fillMessage } from './message.js';
-import { meaningOf } from './reading-meaning.js';
-import { readFlag, type About } from './reading.js';
-import { InstrumentSilentError, ReplyNotUnderstoodError } from './reply-errors.js';
-import { ask, type Talk, tell } from './tell.js';
+import { type Talk, tell } from './tell.js';
+import { TrialErrors } from './trial-errors.js';
+import type { TrialLine } from './trial-line.js';
+import { type Proposal, withRests } from './trial-proposal.js';
+import { TrialQuestions } from './trial-questions.js';
+import type { TrialResult } from './trial-result.js';
 import type { Switching } from './trial-switching.js';
-import type { Answer, TrialLine } from './trial-line.js';
-import { isProven, type TrialResult } from './trial-result.js';
 import { visible } from './visible.js';
 
 /** What an instrument is left with, whatever it was told on the way. */
@@ -25,24 +23,32 @@ const leftWith: Readonly<Partial<Record<Driver['role'], readonly string[]>>> = {
 
 /** A driver's messages, told and asked one by one, and what the instrument makes of each. */
 export class TrialWalk {
-  readonly #driver: Driver;
   readonly #line: TrialLine;
   /** The channel that the exchanges are of, where the driver has several. */
   readonly #channel: { readonly channel?: number };
   /** What a meter was told last to measure. */
   #measures: string | undefined;
+  #driver: Driver;
   #talk: Talk;
+  #errors: TrialErrors;
+  #questions: TrialQuestions;
 
   constructor(line: TrialLine, wire: Wire, channel: number | undefined) {
-    this.#driver = line.driver;
     this.#line = line;
     this.#channel = channel === undefined ? {} : { channel };
+    this.#driver = line.driver;
     this.#talk = line.talk(wire);
+    this.#errors = new TrialErrors(line, this.#talk);
+    this.#questions = new TrialQuestions(line, this.#talk, this.#errors, this.#channel);
   }
 
-  /** From now on it is spoken to in that way. */
-  speak(wire: Wire): void {
-    this.#talk = this.#line.talk(wire);
+  /** From now on it is left the time that it was found to need. */
+  async keepTo({ gap, rests }: Proposal): Promise<void> {
+    this.#driver = withRests(this.#driver, rests);
+    const { wire } = this.#talk.driver;
+    this.#talk = await this.#line.talkAnew({ ...wire, gap: Math.max(wire.gap, gap) });
+    this.#errors = new TrialErrors(this.#line, this.#talk);
+    this.#questions = new TrialQuestions(this.#line, this.#talk, this.#errors, this.#channel);
   }
 
   makeSafe(): Promise<void> {
@@ -52,13 +58,14 @@ export class TrialWalk {
   /** All that the driver says, in its order, but for how it ends. */
   async *messages(): AsyncGenerator<TrialResult, void, undefined> {
     const { errors, remote, prepare, operations, readings } = this.#driver;
-    if (errors !== 'none') yield await this.#errorQueue(errors);
+    if (errors !== 'none') yield await this.#errors.before(errors);
     yield* this.#listed('remote', remote);
     yield* this.#listed('prepare', prepare);
     for (const operation of Object.keys(operations)) yield* this.operation(operation);
     for (const [name, reading] of Object.entries(readings)) {
       yield* this.#measuring(name);
-      yield* this.#reading(name, reading);
+      yield* this.#ranges(name, reading);
+      yield await this.#questions.reading(name, reading);
     }
   }
 
@@ -82,7 +89,7 @@ export class TrialWalk {
 
   identity(): Promise<TrialResult> {
     const { identify } = this.#driver;
-    return this.#result('identity', 'identity', identify, async () => {
+    return this.#line.result({ part: 'identity', name: 'identity', sent: identify }, this.#talk, async () => {
       const reply = await this.#talk.dialogue.ask(identify);
       const fits = isIdentityFor(this.#driver)(reply);
       const is = fits ? 'understood' : 'not-understood';
@@ -104,7 +111,7 @@ export class TrialWalk {
       yield await this.#told('operation', on, filled, { ...this.#part('operations', on), index });
     }
     const reading = this.#driver.readings[state];
-    if (reading?.kind === 'flag') yield await this.#saysThatItIsOn(state, reading);
+    if (reading?.kind === 'flag') yield await this.#questions.saysThatItIsOn(state, reading);
     yield* this.operation(off);
   }
 
@@ -134,16 +141,7 @@ export class TrialWalk {
     const name = this.#driver.role === 'source' ? 'output-state' : 'input-state';
     const reading = this.#driver.readings[name];
     if (reading?.kind !== 'flag') return undefined;
-    const question = questionOf(reading);
-    const proof = await this.#result('proof', 'it is off', question, async () => {
-      const part = this.#part('readings', name);
-      const reply = await this.#atLast(() => ask(this.#talk, reading.ask, part));
-      const on = readFlag(reply, reading, this.#about(question, part));
-      if (!on) return { received: visible(reply), verdict: 'understood', detail: 'off' };
-      return { received: visible(reply), verdict: 'refused', detail: 'it says that it is on' };
-    });
-    if (isProven(proof)) return proof;
-    return { ...proof, detail: `${proof.detail}; nothing more is tried: switch it off by hand` };
+    return this.#questions.saysThatItIsOff(name, reading);
   }
 
   async *#listed(
@@ -156,7 +154,7 @@ export class TrialWalk {
   }
 
   #local({ text, rest }: Message): Promise<TrialResult> {
-    return this.#result('local', 'local', text, async () => {
+    return this.#line.result({ part: 'local', name: 'local', sent: text }, this.#talk, async () => {
       await this.#talk.dialogue.tell(text, rest);
       return {
         received: undefined,
@@ -166,41 +164,17 @@ export class TrialWalk {
     });
   }
 
-  #errorQueue({ ask: question }: Exclude<Driver['errors'], 'none'>): Promise<TrialResult> {
-    return this.#result('error-queue', 'errors', question, async () => {
-      const { entries, clear } = await readErrors(this.#talk.dialogue, this.#driver);
-      const received = listed(entries);
-      const exchanges = entries.map((entry) => this.#reported(entry));
-      if (clear) {
-        const detail = entries.length > 0 ? 'errors from before, now cleared' : 'no errors';
-        return { received, verdict: 'understood', detail, exchanges };
-      }
-      return {
-        ...{ received, verdict: 'unclear', exchanges: [] },
-        detail: 'it does not get clear; does "clear" fit its answer?',
-      };
-    });
-  }
-
-  #told(part: TrialResult['part'], name: string, message: Message, of: DriverPart): Promise<TrialResult> {
-    return this.#result(part, name, message.text, async () => {
+  async #told(
+    part: TrialResult['part'],
+    name: string,
+    message: Message,
+    of: DriverPart,
+  ): Promise<TrialResult> {
+    // What a question left there is none of what this message is to be blamed for.
+    await this.#errors.forget();
+    return this.#line.result({ part, name, sent: message.text }, this.#talk, async () => {
       await tell(this.#talk, [message], of);
-      if (this.#driver.errors === 'none') {
-        const detail = 'sent; there is no error queue to ask about it';
-        return { received: undefined, verdict: 'unclear', detail };
-      }
-      const { entries } = await this.#atLast(() => readErrors(this.#talk.dialogue, this.#driver));
-      if (entries.length === 0) return { received: undefined, verdict: 'understood', detail: '' };
-      const exchanges = entries.map((entry) => this.#reported(entry));
-      const isHarmless = exchanges.every((each) => each.kind === 'errors' && each.is === 'harmless');
-      return isHarmless
-        ? {
-            received: listed(entries),
-            verdict: 'understood',
-            detail: 'what its driver calls harmless',
-            exchanges,
-          }
-        : { received: listed(entries), verdict: 'refused', detail: 'in its error queue', exchanges };
+      return this.#errors.ofWhatWasTold();
     });
   }
 
@@ -211,67 +185,14 @@ export class TrialWalk {
     yield* this.operation(operation);
   }
 
-  async *#reading(name: string, reading: DriverReading): AsyncGenerator<TrialResult, void, undefined> {
-    const part = this.#part('readings', name);
+  async *#ranges(name: string, reading: DriverReading): AsyncGenerator<TrialResult, void, undefined> {
     const ranges = reading.kind === 'number' ? (reading.ranges ?? []) : [];
     for (const [range, { select }] of ranges.entries()) {
-      for (const message of select) yield await this.#told('reading', name, message, { ...part, range });
+      const part = { ...this.#part('readings', name), range };
+      for (const message of select) yield await this.#told('reading', name, message, part);
     }
+    const part = this.#part('readings', name);
     for (const message of reading.ask.slice(0, -1)) yield await this.#told('reading', name, message, part);
-    yield await this.#asked(name, reading, part);
-  }
-
-  #asked(name: string, reading: DriverReading, part: DriverPart): Promise<TrialResult> {
-    const question = questionOf(reading);
-    return this.#result('reading', name, question, async () => {
-      const reply = await this.#atLast(() => ask(this.#talk, reading.ask.slice(-1), part));
-      const heard = (is: Extract<Exchange, { kind: 'reading' }>['heard']): readonly Exchange[] => [
-        {
-          ...{ kind: 'reading', reading: name, sends: reading.ask.map(({ text }) => text) },
-          ...this.#channel,
-          ...(is === undefined ? {} : { heard: is }),
-        },
-      ];
-      try {
-        const is = meaningOf(reply, reading, this.#about(question, part));
-        const exchanges = heard({ answer: reply, is });
-        return { received: visible(reply), verdict: 'understood', detail: meaningText(is), exchanges };
-      } catch (error) {
-        if (!(error instanceof ReplyNotUnderstoodError)) throw error;
-        this.#talk.dialogue.doubt();
-        const exchanges = heard({ answer: reply, is: { kind: 'not-understood' } });
-        return {
-          ...{ received: visible(reply), verdict: 'unclear', exchanges },
-          detail: `expected ${error.expected}`,
-        };
-      }
-    });
-  }
-
-  async #saysThatItIsOn(
-    name: string,
-    reading: Extract<DriverReading, { kind: 'flag' }>,
-  ): Promise<TrialResult> {
-    const asked = await this.#asked(name, reading, this.#part('readings', name));
-    if (asked.verdict !== 'understood' || asked.detail === 'yes') return asked;
-    return { ...asked, verdict: 'refused', detail: 'it says that it is off' };
-  }
-
-  /** What was told just before may have made it deaf for a moment: only twice unheard is silence. */
-  async #atLast<Result>(question: () => Promise<Result>): Promise<Result> {
-    return question().catch((error: unknown) => {
-      if (error instanceof InstrumentSilentError && error.begun === '') return question();
-      throw error;
-    });
-  }
-
-  #result(
-    part: TrialResult['part'],
-    name: string,
-    sent: string,
-    act: () => Promise<Answer>,
-  ): Promise<TrialResult> {
-    return this.#line.result({ part, name, sent }, this.#talk, act);
   }
 
   #performed(operation: string, messages: readonly Message[]): Exchange {
@@ -287,17 +208,8 @@ export class TrialWalk {
     };
   }
 
-  #reported(entry: ReportedError): Exchange {
-    const { errors } = this.#driver;
-    return { kind: 'errors', answer: entry.said, is: errors === 'none' ? 'error' : fateOf(entry, errors) };
-  }
-
   #part(section: DriverPart['section'], name?: string): DriverPart {
     return { driver: this.#driver.name, section, ...(name === undefined ? {} : { name }) };
-  }
-
-  #about(question: string, part: DriverPart): About {
-    return { address: this.#talk.dialogue.address, question, part };
   }
 }
 
@@ -306,12 +218,4 @@ function leftOut(operation: string, message: string, reason: string): TrialResul
     ...{ part: 'operation', name: operation, sent: message, seconds: 0 },
     ...{ received: undefined, verdict: 'not-sent', detail: reason, bytes: [], exchanges: [] },
   };
-}
-
-function questionOf(reading: DriverReading): string {
-  return reading.ask.at(-1)?.text ?? '';
-}
-
-function listed(entries: readonly ReportedError[]): string {
-  return entries.map(({ number, text }) => `${number} "${visible(text)}"`).join(', ');
 }

@@ -4,8 +4,8 @@ import type { Driver } from '../files/driver.js';
 import { driverOfChannel } from '../files/driver-channel.js';
 import type { Connection } from './connection.js';
 import type { Trace } from './dialogue-record.js';
-import { TrialLine } from './trial-line.js';
-import { cautiousGap, meet, type Meeting, toldFirst } from './trial-meeting.js';
+import { cautiousGap, TrialLine } from './trial-line.js';
+import { meet, type Meeting, toldFirst } from './trial-meeting.js';
 import { isUnheard, type OperationNeed, TrialPace } from './trial-pace.js';
 import { type Pace, type Proposal, proposalFor } from './trial-proposal.js';
 import { isProven, type TrialResult } from './trial-result.js';
@@ -92,7 +92,10 @@ class TrialCourse {
       if (identity.verdict === 'silent' || !(await this.#isOff('told'))) return this.#come();
       this.#left = 'changed';
       const pace = (await this.#messages()) ? await this.#pace() : undefined;
-      if (pace !== undefined) await this.#switchOn();
+      if (pace !== undefined) {
+        await this.#walk.keepTo(proposalFor(this.#line.driver, pace));
+        await this.#switchOn(pace);
+      }
       await this.#end();
       return this.#come(pace);
     } finally {
@@ -133,8 +136,8 @@ class TrialCourse {
     }
   }
 
-  async #switchOn(): Promise<void> {
-    const switching = switchingOf(this.#line.driver, this.#results);
+  async #switchOn(pace: Pace): Promise<void> {
+    const switching = switchingOf(this.#line.driver, this.#results, pace);
     if (switching === undefined || this.#isOver()) return;
     if (!((await this.#parts.agree?.(switching)) ?? false)) return;
     if (this.#isOver() || !(await this.#isOff())) return;

@@ -71,6 +71,45 @@ describe('trying a driver', () => {
     expect(results.find(({ name }) => name === 'current')).toMatchObject({ verdict: 'understood' });
   });
 
+  it('blames a message for no error that a question left', async () => {
+    const load = toyLoad({ replies: { 'INP?': '0' } });
+    const clock = new VirtualClock(new Date(0));
+    const queue: string[] = [];
+    const line = new VirtualLine(clock, (message, at) => {
+      if (message === 'MEAS:VOLT?') queue.push('-113,"Undefined header"');
+      const entry = message === 'SYST:ERR?' ? queue.shift() : undefined;
+      if (message === 'MEAS:VOLT?') return [];
+      return entry === undefined
+        ? load.react(message, at)
+        : [{ at: at + 0.01, bytes: Buffer.from(`${entry}\n`) }];
+    });
+    const { results } = await tryDriver({ driver: toyDriver, connection: line, clock });
+    const refused = results.filter(({ verdict }) => verdict !== 'understood' && verdict !== 'not-sent');
+    expect(refused.map(({ sent, verdict, received }) => [sent, verdict, received])).toEqual([
+      // These two the load doesn't know, either.
+      ['POW:PROT 200', 'refused', '-113 "Undefined header"'],
+      ['POW:PROT:STAT ON', 'refused', '-113 "Undefined header"'],
+      ['MEAS:VOLT?', 'refused', '-113 "Undefined header"'],
+    ]);
+    // Refused is known at once: it is not asked again in vain.
+    expect(line.sent.filter((message) => message === 'MEAS:VOLT?')).toHaveLength(1);
+  });
+
+  it('tells nothing more to one that does not take the choice of its channel', async () => {
+    const channels = { select: [{ text: 'LAMP {channel}' }], first: 1, last: 2 };
+    const load = toyLoad();
+    const clock = new VirtualClock(new Date(0));
+    const connection = new VirtualLine(clock, load.react);
+    const { results } = await tryDriver({
+      ...{ driver: { ...toyDriver, channels }, channel: 2, connection, clock },
+    });
+    expect(results.map(({ part, verdict }) => `${part} ${verdict}`)).toEqual([
+      ...['identity understood', 'proof refused'],
+    ]);
+    expect(results[1]?.detail).toMatch(/^its channel was not chosen: -\d+ .*or "channels"$/);
+    expect(load.told).not.toContain('CURR 0');
+  });
+
   it('shows a reply that the driver cannot read', async () => {
     const { results } = await trialOf({ replies: { 'MEAS:VOLT?': '15.1V' } });
     expect(results.find(({ name }) => name === 'voltage')).toMatchObject({
@@ -84,7 +123,7 @@ describe('trying a driver', () => {
     const { results } = await trialOf({ driver: { errors: 'none' } });
     expect(results.find(({ name }) => name === 'set-current')).toMatchObject({
       verdict: 'unclear',
-      detail: 'sent; there is no error queue to ask about it',
+      detail: 'sent; no error queue to ask about it',
     });
   });
 
@@ -104,7 +143,9 @@ describe('trying a driver', () => {
     expect(results).toHaveLength(2);
     expect(results[1]).toMatchObject({ part: 'proof', verdict });
     expect(results[1]?.detail).toMatch(why);
-    expect(results[1]?.detail).toMatch(/; nothing more is tried: switch it off by hand$/);
+    expect(results[1]?.detail).toMatch(
+      /; nothing more is tried: switch it off by hand, and mend "input-state"$/,
+    );
     const asked = load.told.filter((message) => message !== '*IDN?');
     expect(asked).toEqual(['', 'INP OFF', 'INP?', ...(reply === undefined ? ['INP?'] : []), 'INP OFF']);
   });
@@ -122,7 +163,17 @@ describe('trying a driver', () => {
       'INP?: understood 0',
     ]);
     expect(load.told.slice(load.told.indexOf('INP ON'))).toEqual([
-      ...['INP ON', 'SYST:ERR?', 'INP?', 'INP OFF', 'FUNC CURR', 'SYST:ERR?', 'CURR 0', 'SYST:ERR?'],
+      ...[
+        'INP ON',
+        'SYST:ERR?',
+        'INP?',
+        'INP OFF',
+        'SYST:ERR?',
+        'FUNC CURR',
+        'SYST:ERR?',
+        'CURR 0',
+        'SYST:ERR?',
+      ],
       ...['INP OFF', 'SYST:ERR?', 'INP OFF', 'SYST:ERR?', 'INP?'],
     ]);
     expect(results.at(-1)).toMatchObject({ part: 'proof', detail: 'off' });
