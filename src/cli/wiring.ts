@@ -54,13 +54,18 @@ export class WrongRoleError extends RailproofError {
 }
 
 /**
- * The drivers that a bench names, shipped or beside the bench file, each for the role and the channel it is given.
+ * The drivers that a bench names, shipped or beside the bench file, each for the role and the channel it is given;
+ * all of them, or those of some posts.
  * @throws BadFileError, MissingFileError, NotShippedError, WrongRoleError
  */
-export async function readBenchDrivers(bench: FileRead<Bench>): Promise<DriverFiles> {
+export async function readBenchDrivers(
+  bench: FileRead<Bench>,
+  posts?: readonly Post[],
+): Promise<DriverFiles> {
   const where = { relativeTo: dirname(bench.path), shipped: shipped.drivers };
   const files: DriverFiles[number][] = [];
   for (const [post, place] of postsOf(bench.value)) {
+    if (posts?.includes(post) === false) continue;
     const file = await readDriver(place.driver, where);
     if (file.value.role !== roleOf(post)) throw new WrongRoleError(bench.path, post, file.value);
     files.push({ post, file });

@@ -59,6 +59,19 @@ describe('safe', () => {
     expect(heard).toEqual([]);
   });
 
+  it('needs no driver but that of the load', async () => {
+    const load = await loadAtSocket();
+    const meter = '  meter: { driver: not-there.yaml, connection: "tcp://127.0.0.1:1" }\n';
+    writeFileSync(
+      load.bench,
+      readFileSync(load.bench, 'utf8').replace('instruments:\n', `instruments:\n${meter}`),
+    );
+    const { status, stdout } = await railproof('safe', '--bench', load.bench);
+    expect(stdout).toBe(`The load at ${load.address} is off; it was read back.\n`);
+    expect(load.state.input).toBe('0');
+    expect(status).toBe(0);
+  });
+
   it('comes back when the first connection is lost', async () => {
     let calls = 0;
     const load = await loadAtSocket((message) => {
@@ -189,6 +202,22 @@ describe('safe, on a bench with a source,', () => {
     );
     expect(lastLine(stderr)).toMatch(/^THE SOURCE MAY STILL BE ON\. /);
     expect(status).toBe(69);
+  });
+
+  it('switches the load off though the driver of the source cannot be read', async () => {
+    const load = await loadAtSocket();
+    withSource(load.bench, `tcp://127.0.0.1:${await freePort()}`);
+    writeFileSync(
+      load.bench,
+      readFileSync(load.bench, 'utf8').replace('source-output-scpi', 'not-there.yaml'),
+    );
+    const { status, stdout, stderr } = await railproof('safe', '--bench', load.bench);
+    expect(stdout).toBe(`The load at ${load.address} is off; it was read back.\n`);
+    expect(load.state.input).toBe('0');
+    expect(stderr).toContain('not-there.yaml');
+    expect(stderr).not.toContain('THE LOAD');
+    expect(lastLine(stderr)).toMatch(/^THE SOURCE MAY STILL BE ON\. /);
+    expect(status).toBe(66);
   });
 
   it('switches the source off though the load does not answer, and the last words are of the load', async () => {
