@@ -7,6 +7,8 @@ import { program, root } from './railproof.js';
 export interface InTerminal {
   /** Of the program itself, not of its terminal. */
   readonly pid: number;
+  /** Keys are pressed: `\x03` is Ctrl-C. */
+  type(keys: string): void;
   /** All that came on the screen. */
   shown(): string;
   /** Settled when the terminal is closed, which it is when nobody has it any more. */
@@ -29,5 +31,10 @@ export async function startInTerminal(args: readonly string[], file: string): Pr
   });
   const pidIn = (): string => (existsSync(`${file}.pid`) ? readFileSync(`${file}.pid`, 'utf8') : '');
   await until(() => pidIn().endsWith('\n'));
-  return { pid: Number(pidIn()), shown: () => seen, closed };
+  return {
+    pid: Number(pidIn()),
+    type: (keys) => terminal.stdin.write(keys),
+    shown: () => seen,
+    closed,
+  };
 }
