@@ -6,7 +6,7 @@ import { realClock } from '../../src/clock/real-clock.js';
 import { formatAddress } from '../../src/files/connection-address.js';
 import { parseDriver } from '../../src/files/read-driver.js';
 import { withoutSocat } from '../instrument/fixtures/serve-pty.js';
-import { quirkyInstrument, type Quirks } from '../instrument/quirks/quirky-instrument.js';
+import { type Knows, quirkyInstrument, type Quirks } from '../instrument/quirks/quirky-instrument.js';
 import { quirkyLoad } from '../instrument/quirks/quirky-load.js';
 import { serveQuirkyPty, serveQuirkyTcp } from '../instrument/quirks/serve-quirky.js';
 import { lastLine, railproof } from './at-a-socket.js';
@@ -121,6 +121,74 @@ describe.each([
       const withoutWritten = trial.stdout.replace(/^written: .*\n/gm, '');
       expect(again.stdout).toBe(withoutWritten);
       expect(again.status).toBe(trial.status);
+    },
+    patience,
+  );
+});
+
+/** Two channels, of which only what is told and asked after a choice is theirs; each has its own voltage. */
+function twinLoad(select: RegExp) {
+  const inputs = [false, false];
+  let at = 0;
+  const queue: string[] = [];
+  const knows: Knows = (message) => {
+    const chosen = select.exec(message)?.[1];
+    if (chosen !== undefined) at = Number(chosen) - 1;
+    else if (message === 'INP ON' || message === 'INP OFF') inputs[at] = message === 'INP ON';
+    else if (message === '*IDN?') return 'NURSERY,TWIN LOAD,K1,1';
+    else if (message === 'INP?') return inputs[at] === true ? '1' : '0';
+    else if (message === 'MEAS:VOLT?') return `${at + 1}2.5`;
+    else if (message === 'MEAS:CURR?') return '0';
+    else if (message === 'SYST:ERR?') return queue.shift() ?? '0,"No error"';
+    else if (!/^$|^(\*CLS|FUNC|CURR|VOLT)/.test(message)) queue.push('-113,"Undefined header"');
+    return undefined;
+  };
+  return { knows };
+}
+
+describe('drivers --try --channel', () => {
+  const trying = async (channel: string, select: RegExp) => {
+    const instrument = quirkyInstrument({ gap: 0.01 }, twinLoad(select).knows, realClock);
+    const connection = formatAddress(await serveQuirkyTcp(instrument, { clients: 1 }));
+    const folder = mkdtempSync(join(tmpdir(), 'railproof-channel-'));
+    onTestFinished(() => {
+      rmSync(folder, { recursive: true, force: true });
+    });
+    const written = join(folder, 'twin');
+    const trial = await railproof(
+      ...['drivers', '--try', 'load-channel-scpi', '--channel', channel],
+      ...['--connection', connection, '--write', written],
+    );
+    return { ...trial, instrument, written };
+  };
+
+  it(
+    'speaks of that channel only, and writes what it answered as that of the channel',
+    async () => {
+      const { stdout, status, stderr, instrument, written } = await trying('2', /^INST:NSEL ([12])$/);
+      expect(stdout).toMatch(/^understood +voltage +[\d.]+ ms +22\.5 V$/m);
+      expect(lastLine(stderr)).toBe('The load is off; it was read back.');
+      expect(instrument.heard).toContain('INST:NSEL 2');
+      expect(instrument.heard).not.toContain('INST:NSEL 1');
+      expect(status).toBe(0);
+      const { dialogue } = parseDriver(readFileSync(`${written}.yaml`, 'utf8'), 'twin.yaml');
+      expect(dialogue).toContainEqual({
+        ...{ kind: 'reading', reading: 'voltage', channel: 2, sends: ['INST:NSEL 2', 'MEAS:VOLT?'] },
+        heard: { answer: '22.5', is: { kind: 'number', value: 22.5, dimension: 'voltage' } },
+      });
+      expect((await railproof('check', `${written}.yaml`)).status).toBe(0);
+    },
+    patience,
+  );
+
+  it(
+    'goes no further where the choice of the channel is refused',
+    async () => {
+      const { stdout, status, stderr, instrument } = await trying('2', /^CHAN ([12])$/);
+      expect(stdout).toMatch(/^refused +it is off .*its channel was not chosen: -113/m);
+      expect(lastLine(stderr)).toMatch(/^THE LOAD MAY STILL BE ON/);
+      expect(instrument.heard).not.toContain('CURR 0');
+      expect(status).toBe(69);
     },
     patience,
   );
