@@ -1,3 +1,4 @@
+import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { driverLine, atDriverLine } from '../../src/cli/driver-line.js';
 import { shelves } from '../../src/cli/wiring.js';
@@ -50,4 +51,14 @@ it('a run that cannot begin names the line of the message that was refused', asy
   expect(stderr).toMatch(/reports -113 "Undefined header" after "LAMP ON"/);
   expect(stderr).toMatch(/; see \S+driver\.yaml:\d+/);
   expect(lastLine(stderr)).not.toBe('');
+});
+
+it('making safe names the line of what the load says, and cannot be read', async () => {
+  const load = await loadAtSocket((message) => (message === 'INP?' ? { answer: 'PERHAPS' } : undefined));
+  const { status, stderr } = await railproof('safe', '--bench', load.bench);
+  const line = lineOf(readFileSync(load.driver, 'utf8'), 'input-state:');
+  expect(line).toBeGreaterThan(1);
+  expect(stderr).toContain(`driver.yaml:${line}`);
+  expect(lastLine(stderr)).toMatch(/^THE LOAD MAY STILL BE ON/);
+  expect(status).toBe(69);
 });
