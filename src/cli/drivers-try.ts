@@ -13,7 +13,7 @@ import { StoppedByOperator } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
 import { fitted } from '../run/word-wrap.js';
 import { connectors } from './connectors.js';
-import { atDriverLine } from './driver-line.js';
+import { atDriverLine, driverLine } from './driver-line.js';
 import { errorText } from './error-text.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
@@ -64,7 +64,8 @@ export async function tryOut(wanted: TryWanted, streams: Streams): Promise<ExitC
       },
       onResult: (result) => {
         results.push(result);
-        say(`${resultText(result, streams.stdout.columns)}\n`);
+        const place = driverLine(result.at, [file]);
+        say(`${resultText(result, streams.stdout.columns, place)}\n`);
       },
       onPace: () => {
         if (json) return;
@@ -134,7 +135,7 @@ function tell(
   ending: Ending,
   { stderr }: Streams,
 ): ExitCode {
-  if (ending.how !== 'as-it-should') stderr.write(`${errorText(ending.error)}\n`);
+  if (ending.how !== 'as-it-should') stderr.write(`${fitted(errorText(ending.error), stderr.columns)}\n`);
   const proof = results.findLast(({ part }) => part === 'proof');
   const off = ending.how !== 'broken-off' && proof?.verdict === 'understood';
   const mayBeOn = { load: loadMayStillBeOn, source: sourceMayStillBeOn }[driver.role as string];

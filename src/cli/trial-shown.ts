@@ -6,6 +6,7 @@ import type { TrialResult } from '../instrument/trial-result.js';
 import type { Trial } from '../instrument/trial.js';
 import { visible } from '../instrument/visible.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
+import { printable } from '../quantity/printable.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { alignTable } from '../report/align.js';
 import { jsonText } from '../report/json-text.js';
@@ -16,7 +17,12 @@ const usualWidth = 80;
 const indent = '  ';
 
 /** A verdict, then every byte that went for it, with its ends of line: `> INP?\n  < 0\r\n`. */
-export function resultText(result: TrialResult, columns = usualWidth): string {
+export function resultText(
+  result: TrialResult,
+  columns = usualWidth,
+  /** `my-load.yaml:18`, where it is known. */
+  place?: string,
+): string {
   const { part, verdict, name, sent, received, detail, seconds } = result;
   const time = seconds > 0 ? milliseconds(seconds) : '';
   const head = `${verdict.padEnd(10)}  ${name.padEnd(18)}  ${time.padStart(8)}  `;
@@ -31,7 +37,13 @@ export function resultText(result: TrialResult, columns = usualWidth): string {
     '\n',
     `\n${' '.repeat(head.length)}`,
   );
-  return [`${head}${text}`.trimEnd(), ...bytesText(result, columns)].join('\n');
+  const see = place !== undefined && toBeMended(result) ? [`${indent}see ${printable(place)}`] : [];
+  return [`${head}${text}`.trimEnd(), ...bytesText(result, columns), ...see].join('\n');
+}
+
+/** Where nobody can tell whether it was understood there is nothing to mend yet. */
+function toBeMended({ verdict, received }: TrialResult): boolean {
+  return verdict === 'refused' || verdict === 'silent' || (verdict === 'unclear' && received !== undefined);
 }
 
 /** What was sent and what came back; what came in pieces is one. */

@@ -84,7 +84,7 @@ export class TrialLine {
 
   /** Does something, and says what came of it whatever fails but the line itself. @throws ConnectionLostError */
   async result(
-    head: Pick<TrialResult, 'part' | 'name' | 'sent'>,
+    head: Pick<TrialResult, 'part' | 'name' | 'sent' | 'at'>,
     { dialogue }: Talk,
     act: () => Promise<Answer>,
   ): Promise<TrialResult> {

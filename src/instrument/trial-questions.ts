@@ -33,7 +33,7 @@ export class TrialQuestions {
     await this.#errors.forget();
     const part = this.#part(name);
     const question = questionOf(reading);
-    return this.#line.result({ part: 'reading', name, sent: question }, this.#talk, () =>
+    return this.#line.result({ part: 'reading', name, sent: question, at: part }, this.#talk, () =>
       this.#unlessRefused(
         () => ask(this.#talk, reading.ask.slice(-1), part),
         (reply) => this.#understood(reply, name, reading),
@@ -54,7 +54,7 @@ export class TrialQuestions {
     const part = this.#part(name);
     const question = questionOf(reading);
     const proof = await this.#line.result(
-      { part: 'proof', name: 'it is off', sent: question },
+      { part: 'proof', name: 'it is off', sent: question, at: part },
       this.#talk,
       async () => {
         const reply = await atLast(() => ask(this.#talk, reading.ask, part));

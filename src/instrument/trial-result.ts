@@ -1,5 +1,6 @@
 import type { Exchange } from '../files/driver-dialogue.js';
 import type { Seconds } from '../quantity/quantity.js';
+import type { DriverPart } from './driver-part.js';
 import type { Received, Sent } from './dialogue-record.js';
 
 /** What an instrument made of one message of a driver on trial. */
@@ -17,6 +18,8 @@ export interface TrialResult {
   /** Of the operation or the reading; of the part otherwise. */
   readonly name: string;
   readonly sent: string;
+  /** What of the driver file says so; undefined where nothing of it does. */
+  readonly at?: DriverPart;
   /** Escaped and cut; undefined when nothing came. */
   readonly received: string | undefined;
   /** `unclear` where a reply makes no sense, and where there is no error queue that could tell. */

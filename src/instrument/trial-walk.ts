@@ -105,10 +105,11 @@ export class TrialWalk {
   /** Switches on, at nothing, for as long as it takes to ask whether it is on. Whoever calls sees to it that it is off. */
   async *switchOn({ first, on, off, state }: Switching): AsyncGenerator<TrialResult, void, undefined> {
     for (const operation of first) yield* this.operation(operation);
-    for (const [index, message] of (this.#driver.operations[on] ?? []).entries()) {
+    const messages = this.#driver.operations[on] ?? [];
+    for (const [index, message] of messages.entries()) {
       const values = harmlessValues(on, this.#driver);
       const filled = { ...message, text: fillMessage(message.text, values) };
-      yield await this.#told('operation', on, filled, { ...this.#part('operations', on), index });
+      yield await this.#told('operation', on, filled, this.#part('operations', on, inFile(messages, index)));
     }
     const reading = this.#driver.readings[state];
     if (reading?.kind === 'flag') yield await this.#questions.saysThatItIsOn(state, reading);
@@ -127,7 +128,7 @@ export class TrialWalk {
     const values = harmlessValues(operation, this.#driver);
     const filled = messages.map((message) => ({ ...message, text: fillMessage(message.text, values) }));
     for (const [index, message] of filled.entries()) {
-      const part: DriverPart = { ...this.#part('operations', operation), index };
+      const part = this.#part('operations', operation, inFile(messages, index));
       const result = await this.#told('operation', operation, message, part);
       const isLast = index === filled.length - 1;
       yield isLast
@@ -149,7 +150,7 @@ export class TrialWalk {
     messages: readonly Message[],
   ): AsyncGenerator<TrialResult, void, undefined> {
     for (const [index, message] of messages.entries()) {
-      yield await this.#told(part, part, message, { ...this.#part(part), index });
+      yield await this.#told(part, part, message, this.#part(part, undefined, inFile(messages, index)));
     }
   }
 
@@ -172,7 +173,8 @@ export class TrialWalk {
   ): Promise<TrialResult> {
     // What a question left there is none of what this message is to be blamed for.
     await this.#errors.forget();
-    return this.#line.result({ part, name, sent: message.text }, this.#talk, async () => {
+    const at: DriverPart = message.selectsChannel === true ? this.#part('channels') : of;
+    return this.#line.result({ part, name, sent: message.text, at }, this.#talk, async () => {
       await tell(this.#talk, [message], of);
       return this.#errors.ofWhatWasTold();
     });
@@ -208,9 +210,18 @@ export class TrialWalk {
     };
   }
 
-  #part(section: DriverPart['section'], name?: string): DriverPart {
-    return { driver: this.#driver.name, section, ...(name === undefined ? {} : { name }) };
+  #part(section: DriverPart['section'], name?: string, index?: number): DriverPart {
+    return {
+      ...{ driver: this.#driver.name, section },
+      ...(name === undefined ? {} : { name }),
+      ...(index === undefined ? {} : { index }),
+    };
   }
+}
+
+/** Which of its messages it is in the file: those that choose a channel do not stand there. */
+function inFile(messages: readonly Message[], index: number): number {
+  return messages.slice(0, index).filter(({ selectsChannel }) => selectsChannel !== true).length;
 }
 
 function leftOut(operation: string, message: string, reason: string): TrialResult {

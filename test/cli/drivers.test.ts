@@ -1,3 +1,4 @@
+import { readFileSync } from 'node:fs';
 import { describe, expect, it, onTestFinished } from 'vitest';
 import { realClock } from '../../src/clock/real-clock.js';
 import { serveBench } from '../../src/simulation/serve.js';
@@ -62,6 +63,11 @@ describe('drivers --try', () => {
     const load = await loadAtSocket(undefined, (driver) => driver.replace('CURR:PROT', 'DOOR:PROT'));
     const { status, stdout, stderr } = await railproof(...trying(load));
     expect(stdout).toMatch(/^refused +protect-current .*-113 "Undefined header"\n {2}> DOOR:PROT 40\\n/m);
+    const lines = readFileSync(load.driver, 'utf8').split('\n');
+    const line = lines.findIndex((each) => each.includes('DOOR:PROT')) + 1;
+    expect(line).toBeGreaterThan(1);
+    // It names the line to mend, of this message and of no other.
+    expect(stdout.match(/^ {2}see .*$/gm)).toEqual([`  see ${load.driver}:${line}`]);
     expect(lastLine(stderr)).toBe('The load is off; it was read back.');
     expect(status).toBe(1);
   });
