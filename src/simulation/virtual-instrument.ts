@@ -94,7 +94,16 @@ export class VirtualInstrument {
       return { reply: undefined, readyAt: this.#free };
     }
     const { reply } = this.#interpreter.hear(incoming.text);
-    return { reply: reply === undefined ? undefined : reply + this.#replyEnd, readyAt: this.#free };
+    return { reply: this.#spoken(incoming.text, reply), readyAt: this.#free };
+  }
+
+  /** It repeats a message, ends its lines and asks for the next message where and as its driver says. */
+  #spoken(message: string, reply: string | undefined): string | undefined {
+    const { echo = false, prompt = '', replyEnd } = this.#driver.wire;
+    const end = this.#replyEnd.endsWith(replyEnd) ? this.#replyEnd : replyEnd;
+    const lines = [...(echo ? [message] : []), ...(reply === undefined ? [] : [reply])];
+    const spoken = lines.map((line) => line + end).join('') + prompt;
+    return spoken === '' ? undefined : spoken;
   }
 
   #wake(dialect: Dialect, { ratings }: Driver): Interpreter {

@@ -50,6 +50,17 @@ describe('a shipped driver', () => {
     },
   );
 
+  it('does, too, when it is written for one that repeats, prompts, and ends its lines otherwise', async () => {
+    const shipped = readFileSync(new URL('../../drivers/load-input-scpi.yaml', import.meta.url), 'utf8');
+    const adapted = shipped
+      .replace('reply-end: "\\n"', 'reply-end: "\\r", echo: true, prompt: "> "')
+      .replace('name: load-input-scpi', 'name: load-chatty');
+    expect(adapted).toContain('reply-end: "\\r", echo: true');
+    writeFileSync(join(folder, 'load-chatty.yaml'), adapted);
+    const result = await performed('quick-look', 'nursery', asLoad('./load-chatty.yaml', ''));
+    expect(result.outcome).toBe('conforms');
+  });
+
   it('of a meter does when it starts a measurement and fetches it, once it is ready', async () => {
     const shipped = readFileSync(new URL('../../drivers/meter-function-scpi.yaml', import.meta.url), 'utf8');
     const adapted = shipped
