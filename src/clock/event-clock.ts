@@ -26,8 +26,9 @@ export class EventClock implements SettableClock {
 
   /** When it is over, exactly that much has passed, however late the machine woke us. */
   async sleep(seconds: number, signal?: AbortSignal): Promise<void> {
-    const end = this.#now + Math.max(0, seconds);
-    await this.#base.sleep(seconds, signal);
+    const wait = Math.max(0, seconds);
+    const end = this.#now + wait;
+    await this.#base.sleep(wait, signal);
     this.reach(end);
   }
 
