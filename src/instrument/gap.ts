@@ -53,6 +53,11 @@ export function isGap(error: unknown): error is RailproofError {
   );
 }
 
+/** Not answered, or not so that anything could be made of it; the line is still there. */
+export function isUnheard(error: unknown): boolean {
+  return isGap(error) && !(error instanceof ConnectionLostError);
+}
+
 /** Nobody is there yet, or speaks clearly yet. */
 function isStillAway(error: unknown): error is RailproofError {
   return (

@@ -2,10 +2,9 @@ import type { Clock } from '../clock/clock.js';
 import type { Driver, Role, Wire } from '../files/driver.js';
 import type { Seconds } from '../quantity/quantity.js';
 import type { Connection } from './connection.js';
-import { ConnectionLostError } from './connection-errors.js';
 import { Dialogue } from './dialogue.js';
 import { firstWords, type FirstWords } from './first-words.js';
-import { isGap } from './gap.js';
+import { isUnheard } from './gap.js';
 import { isIdentityFor } from './identity.js';
 import { type Answers, measuredQuestions } from './match-measured.js';
 import { harmlessQuestions } from './match-questions.js';
@@ -169,7 +168,7 @@ async function emptyErrors(dialogue: Dialogue, drivers: readonly Driver[], answe
 }
 
 function unheard(error: unknown): undefined {
-  if (isGap(error) && !(error instanceof ConnectionLostError)) return undefined;
+  if (isUnheard(error)) return undefined;
   throw error;
 }
 

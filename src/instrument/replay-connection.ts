@@ -36,11 +36,6 @@ export function replays(clock: Clock): (address: ReplayAddress) => Promise<Conne
   };
 }
 
-/** One dialogue from its beginning. @throws as `replays` does */
-export function openReplay(address: ReplayAddress, clock: Clock): Promise<Connection> {
-  return replays(clock)(address);
-}
-
 interface Recording {
   readonly tape: ReplayTape;
   readonly time: ReplayTime;

@@ -3,7 +3,7 @@ import type { Driver } from '../files/driver.js';
 import { fateOf, readErrors, type ReportedError } from './error-report.js';
 import type { Talk } from './tell.js';
 import { type Answer, atLast, type TrialLine } from './trial-line.js';
-import { isUnheard } from './trial-pace.js';
+import { isUnheard } from './gap.js';
 import type { TrialResult } from './trial-result.js';
 import { visible } from './visible.js';
 

@@ -1,9 +1,8 @@
 import type { Message, Wire } from '../files/driver.js';
 import type { Seconds } from '../quantity/quantity.js';
-import { ConnectionLostError } from './connection-errors.js';
 import { harmlessValues, whyLeftOut } from './harmless.js';
 import { fillMessage } from './message.js';
-import { isGap } from './gap.js';
+import { isUnheard } from './gap.js';
 import { ask, type Talk } from './tell.js';
 import { cautiousGap, type TrialLine } from './trial-line.js';
 
@@ -161,9 +160,4 @@ function orUnheard(answer: Promise<unknown>): Promise<unknown> {
     if (isUnheard(error)) return unheard;
     throw error;
   });
-}
-
-/** Not answered, or not so that anything could be made of it; the line is still there. */
-export function isUnheard(error: unknown): boolean {
-  return isGap(error) && !(error instanceof ConnectionLostError);
 }

@@ -11,7 +11,7 @@ import { dialogueHeader, dialogueLine } from '../../src/instrument/dialogue-reco
 import { Dialogue } from '../../src/instrument/dialogue.js';
 import type { Connection } from '../../src/instrument/connection.js';
 import { tracedConnection } from '../../src/instrument/traced-connection.js';
-import { openReplay } from '../../src/instrument/replay-connection.js';
+import { replays } from '../../src/instrument/replay-connection.js';
 import { VirtualLine } from './fixtures/virtual-line.js';
 
 async function fileOf(text: string): Promise<string> {
@@ -23,7 +23,7 @@ async function fileOf(text: string): Promise<string> {
 }
 
 const replay = (file: string, clock = new VirtualClock(new Date(0))) =>
-  openReplay({ kind: 'replay', file }, clock);
+  replays(clock)({ kind: 'replay', file });
 const header = dialogueHeader('tcp://127.0.0.1:5025');
 const bytes = (text: string): Uint8Array => Buffer.from(text, 'latin1');
 
