@@ -16,13 +16,14 @@ export const mayImport = {
   bench: ['errors', 'clock', 'quantity', 'files', 'instrument'],
   steps: ['errors', 'clock', 'quantity', 'statistics', 'circuit', 'files', 'record', 'bench'],
   run: ['errors', 'clock', 'quantity', 'circuit', 'files', 'record', 'bench', 'steps'],
-  simulation: ['errors', 'clock', 'quantity', 'files', 'instrument', 'circuit'],
+  simulation: ['errors', 'clock', 'quantity', 'statistics', 'files', 'instrument', 'circuit'],
   analysis: ['errors', 'quantity', 'statistics', 'circuit', 'record'],
   judgement: ['errors', 'quantity', 'statistics', 'circuit', 'record', 'analysis'],
-  report: ['errors', 'quantity', 'record', 'analysis', 'judgement'],
+  arrangement: ['errors', 'quantity', 'statistics', 'circuit', 'record', 'analysis'],
+  report: ['errors', 'quantity', 'record', 'analysis', 'judgement', 'arrangement'],
 };
 /** Rooms that compute only: no ports, files, clocks or processes. */
-export const pure = ['quantity', 'statistics', 'circuit', 'analysis', 'judgement'];
+export const pure = ['quantity', 'statistics', 'circuit', 'analysis', 'judgement', 'arrangement'];
 
 const rooms = [...Object.keys(mayImport), 'cli'];
 const boundaries = Object.entries(mayImport).map(([room, allowed]) => ({

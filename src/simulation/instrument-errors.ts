@@ -1,7 +1,7 @@
 import { type Post, roleOf } from '../files/bench.js';
 import type { Accuracy, Driver } from '../files/driver.js';
 import type { SimulatedError, Simulation } from '../files/simulation-section.js';
-import type { Random } from './random.js';
+import type { Random } from '../statistics/random.js';
 
 /** An instrument without a fault. */
 export const exact: SimulatedError = { gain: 0, offset: 0, resolution: 0 };

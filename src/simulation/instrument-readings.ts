@@ -8,7 +8,7 @@ import { faultTime, reversedFrom } from './instrument-faults.js';
 import { Lag } from './lag.js';
 import { ohmsAt, type Sight, voltsAt } from './meter-sight.js';
 import type { MeterPlace, Probes } from './probes.js';
-import type { Random } from './random.js';
+import type { Random } from '../statistics/random.js';
 import type { Moment, VirtualBench } from './virtual-bench.js';
 
 /** A converter averages; so many looks stand for its aperture. */

@@ -8,7 +8,7 @@ import type { Seconds } from '../quantity/quantity.js';
 import { dialectFor } from './dialects/choose-dialect.js';
 import { errorOf } from './instrument-errors.js';
 import { Probes } from './probes.js';
-import { randomFrom, type Random } from './random.js';
+import { randomFrom, type Random } from '../statistics/random.js';
 import { SimulatedConnection } from './simulated-connection.js';
 import { CannotSimulateError } from './simulation-errors.js';
 import { type SimulatedOperator, simulatedOperator } from './simulated-operator.js';

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { analyse } from '../../src/analysis/analyse.js';
 import { bothWays, bothWaysNote } from '../../src/analysis/both-ways.js';
 import type { CurvePoint } from '../../src/analysis/curve.js';
-import { randomFrom } from '../../src/simulation/random.js';
+import { randomFrom } from '../../src/statistics/random.js';
 import { evenly, evidenceOf, type Point } from './evidence-of.js';
 
 const currents = evenly(0, 4, 9);

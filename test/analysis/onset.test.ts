@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { analyse } from '../../src/analysis/analyse.js';
 import type { Finding } from '../../src/analysis/finding.js';
-import { randomFrom } from '../../src/simulation/random.js';
+import { randomFrom } from '../../src/statistics/random.js';
 import { evenly, evidenceOf, headerOf, ramp } from './evidence-of.js';
 
 const currents = evenly(0, 4, 21);

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { openCircuitFindings } from '../../src/analysis/open-circuit.js';
-import { randomFrom } from '../../src/simulation/random.js';
+import { randomFrom } from '../../src/statistics/random.js';
 import { evidenceOf, headerOf, type Point } from './evidence-of.js';
 
 const rootThree = Math.sqrt(3);

@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import thermometer from '../../fixtures/reference/gum-h3.json' with { type: 'json' };
 import { analyse } from '../../src/analysis/analyse.js';
 import type { Finding } from '../../src/analysis/finding.js';
-import { randomFrom } from '../../src/simulation/random.js';
+import { randomFrom } from '../../src/statistics/random.js';
 import { coverageFactor } from '../../src/statistics/student-t.js';
 import { evenly, evidenceOf, headerOf, type Point, ramp } from './evidence-of.js';
 

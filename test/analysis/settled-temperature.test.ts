@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { settledTemperature } from '../../src/analysis/settled-temperature.js';
-import { randomFrom } from '../../src/simulation/random.js';
+import { randomFrom } from '../../src/statistics/random.js';
 
 /** Looks each 10 s of something that goes from 23 °C by 35 K, with a time constant of 720 s. */
 function looks(until: number, noise: () => number = () => 0, at = warming) {

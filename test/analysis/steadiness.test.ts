@@ -6,7 +6,7 @@ import { analyse } from '../../src/analysis/analyse.js';
 import type { CurvePoint } from '../../src/analysis/curve.js';
 import type { Finding } from '../../src/analysis/finding.js';
 import { findEdge } from '../../src/analysis/steadiness.js';
-import { randomFrom } from '../../src/simulation/random.js';
+import { randomFrom } from '../../src/statistics/random.js';
 import { randomCase } from '../whole/random-case.js';
 import { runQuietly } from '../whole/run-quietly.js';
 import { evenly, evidenceOf, headerOf, type Point } from './evidence-of.js';

@@ -10,7 +10,7 @@ import { formatQuantity } from '../../src/quantity/format-quantity.js';
 import { checkJournal, readJournal } from '../../src/record/journal-reader.js';
 import type { ReadingTaken } from '../../src/record/journal-event.js';
 import { understand } from '../../src/report/understand.js';
-import { randomFrom } from '../../src/simulation/random.js';
+import { randomFrom } from '../../src/statistics/random.js';
 import { journalOf, until } from './at-the-bench.js';
 import { startInTerminal } from './in-terminal.js';
 import { serve } from './served.js';

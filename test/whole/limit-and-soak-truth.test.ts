@@ -4,7 +4,7 @@ import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { SimulatedModule } from '../../src/files/simulation-section.js';
 import type { Result } from '../../src/report/result.js';
-import { randomFrom } from '../../src/simulation/random.js';
+import { randomFrom } from '../../src/statistics/random.js';
 import { trueValues } from '../../src/simulation/true-values.js';
 import { randomCase, type RandomCase } from './random-case.js';
 import { runQuietly } from './run-quietly.js';

@@ -1,7 +1,7 @@
 import type { Bench } from '../../src/files/bench.js';
 import type { Module } from '../../src/files/module.js';
 import type { ModuleLimit, SimulatedModule } from '../../src/files/simulation-section.js';
-import { randomFrom } from '../../src/simulation/random.js';
+import { randomFrom } from '../../src/statistics/random.js';
 
 const styles = ['constant-current', 'foldback', 'constant-power', 'hiccup', 'latch-off'] as const;
 

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { randomFrom } from '../../src/simulation/random.js';
+import { randomFrom } from '../../src/statistics/random.js';
 
 const many = (draw: () => number): number[] => Array.from({ length: 20_000 }, draw);
 const mean = (values: readonly number[]): number =>
