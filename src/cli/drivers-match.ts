@@ -10,7 +10,7 @@ import { visible } from '../instrument/visible.js';
 import { printable } from '../quantity/printable.js';
 import { alignTable } from '../report/align.js';
 import { jsonText } from '../report/json-text.js';
-import { fitted } from '../run/word-wrap.js';
+import { fitted } from '../quantity/word-wrap.js';
 import { connectors } from './connectors.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';

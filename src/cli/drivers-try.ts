@@ -11,7 +11,7 @@ import { type Trial, tryDriver, type TrialResult } from '../instrument/trial.js'
 import { printable } from '../quantity/printable.js';
 import { StoppedByOperator } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
-import { fitted } from '../run/word-wrap.js';
+import { fitted } from '../quantity/word-wrap.js';
 import { connectors } from './connectors.js';
 import { atDriverLine, driverLine } from './driver-line.js';
 import { errorText } from './error-text.js';

@@ -4,7 +4,7 @@ import { shippedNames } from '../files/shipped-file.js';
 import { printable } from '../quantity/printable.js';
 import { alignTable } from '../report/align.js';
 import { jsonText } from '../report/json-text.js';
-import { fitted } from '../run/word-wrap.js';
+import { fitted } from '../quantity/word-wrap.js';
 import type { Streams } from './streams.js';
 import { TrialUsageError } from './trial-usage.js';
 import { shelves, shipped } from './wiring.js';

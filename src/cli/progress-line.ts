@@ -3,7 +3,7 @@ import type { Clock } from '../clock/clock.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import { printable } from '../quantity/printable.js';
 import type { Dimension, Seconds } from '../quantity/quantity.js';
-import { fitted } from '../run/word-wrap.js';
+import { fitted } from '../quantity/word-wrap.js';
 import type { Plan } from '../run/plan.js';
 import type { RunWatcher } from '../run/perform.js';
 import type { Progress } from '../steps/step-kind.js';

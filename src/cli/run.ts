@@ -8,7 +8,7 @@ import type { Bench } from '../files/bench.js';
 import { needsOperator } from '../run/plan-circuit.js';
 import { OperatorAbsentError } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
-import { fitted } from '../run/word-wrap.js';
+import { fitted } from '../quantity/word-wrap.js';
 import type { Operator } from '../steps/operator.js';
 import { atDriverLine } from './driver-line.js';
 import { errorText } from './error-text.js';

@@ -10,7 +10,7 @@ import { printable } from '../quantity/printable.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { alignTable } from '../report/align.js';
 import { jsonText } from '../report/json-text.js';
-import { fitted, wordWrap } from '../run/word-wrap.js';
+import { fitted, wordWrap } from '../quantity/word-wrap.js';
 
 /** Where nobody said how wide the screen is. */
 const usualWidth = 80;

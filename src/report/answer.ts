@@ -1,7 +1,6 @@
 import { type Finding, findingNamed } from '../analysis/finding.js';
 import { compareWithBaseline } from '../judgement/compare.js';
-import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Amperes } from '../quantity/quantity.js';
+import { roundedDown } from '../quantity/rounded-down.js';
 import { changesInWords } from './changes.js';
 import { inOneLine } from './finding-text.js';
 import { groupAnswer } from './group-answer.js';
@@ -33,7 +32,9 @@ function advice(result: Result): readonly string[] {
   const current = Number(recommended.value);
   const it = { single: 'it', parallel: 'the group', series: 'the string' }[result.header.circuit];
   const what =
-    current > 0 ? `${loaded(it, result.outcome)} with up to ${roundedDown(current)}` : `do not load ${it}`;
+    current > 0
+      ? `${loaded(it, result.outcome)} with up to ${roundedDown(current, 'current')}`
+      : `do not load ${it}`;
   const sentence = endedHow(result).how === 'completed' ? what : `as far as the run went, ${what}`;
   return [`${capitalised(sentence)}.`, why(usable)];
 }
@@ -77,12 +78,4 @@ function whoDecides({ header, findings }: Result): readonly string[] {
   return [
     'Its earth was worked on: whether it may be used so is for local codes and a licensed person to decide.',
   ];
-}
-
-/** To three digits, and never up: a recommendation must not grow by being written. */
-function roundedDown(current: Amperes): string {
-  const step = 10 ** (Math.floor(Math.log10(current)) - 2);
-  // A whole number of steps is not made one less by what dividing loses.
-  const down = Math.floor(current / step + 1e-9) * step;
-  return formatQuantity(down, 'current', { significant: 3 });
 }

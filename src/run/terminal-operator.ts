@@ -4,7 +4,7 @@ import { printableLines } from '../quantity/printable.js';
 import type { Acknowledgement } from '../record/journal-event.js';
 import type { Operator, OperatorRequest } from '../steps/operator.js';
 import { StoppedByOperator } from './stopped.js';
-import { fitted } from './word-wrap.js';
+import { fitted } from '../quantity/word-wrap.js';
 
 /** Longer lines are hard to read, however wide the window. */
 const widestText = 100;
