@@ -8,6 +8,8 @@ export interface UnderstoodRecord {
   readonly header: RunHeader;
   readonly findings: readonly Finding[];
   readonly state: RecordState;
+  /** Its procedure's criteria that it does not conform to. */
+  readonly unmet: readonly { readonly finding: string; readonly requirement: string }[];
 }
 
 /**

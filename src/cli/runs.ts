@@ -1,13 +1,13 @@
-import { existsSync, readdirSync } from 'node:fs';
 import { join } from 'node:path';
 import { z } from 'zod';
-import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
+import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import { printable } from '../quantity/printable.js';
 import { readWhole } from '../record/read-whole.js';
 import { runFolderAt } from '../record/run-folder.js';
 import { jsonText } from '../report/json-text.js';
 import { alignTable } from '../report/align.js';
+import { recordNames } from './record-names.js';
 import type { Streams } from './streams.js';
 
 /** `railproof runs`: the records of a folder, oldest first, a line each. */
@@ -15,7 +15,7 @@ export function runs(
   wanted: { readonly folder: string; readonly json?: boolean },
   streams: Streams,
 ): ExitCode {
-  const names = namesIn(wanted.folder);
+  const names = recordNames(wanted.folder);
   const rows: string[][] = [];
   const listed: object[] = [];
   for (const name of names) {
@@ -41,29 +41,6 @@ export function runs(
     );
   }
   return exitCodes.conforms;
-}
-
-function namesIn(folder: string): string[] {
-  try {
-    return readdirSync(folder)
-      .filter((name) => existsSync(join(folder, name, 'run.json')))
-      .sort();
-  } catch (cause) {
-    throw new NoRunsError(folder, cause);
-  }
-}
-
-/** There is no folder to list. */
-export class NoRunsError extends RailproofError {
-  readonly code = 'NO_RUNS';
-  readonly exitCode = exitCodes.missingFile;
-
-  constructor(folder: string, cause: unknown) {
-    super(`${folder} can't be listed: there is no such folder`, {
-      advice: 'records are kept in ./runs unless `railproof run --runs <folder>` said otherwise',
-      cause,
-    });
-  }
 }
 
 interface Entry {
