@@ -1,15 +1,11 @@
 import { type Ballast, type BallastOutcome, smallestBallast } from '../circuit/ballast.js';
+import { resistorRating } from '../circuit/resistor-rating.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Amperes, Ratio, Watts } from '../quantity/quantity.js';
+import type { Amperes, Ratio } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { type Finding, inWords } from './finding.js';
 import { amps, givenPercent, percent } from './in-words.js';
 import type { ModuleLine } from './module-lines.js';
-
-/** Of a resistor's rating: what it may be loaded with for years in still air, by the usual rule of thumb. */
-const reserve: Ratio = 0.5;
-/** What power resistors are sold for. */
-const ratings: readonly Watts[] = [0.25, 0.5, 1, 2, 3, 5, 7, 10, 15, 25, 50, 100, 200];
 
 /**
  * `recommended-ballast`: the smallest preferred value that keeps the modules within the imbalance asked for
@@ -81,7 +77,7 @@ function foundInWords(
   { imbalance, dissipation, voltageCost, value }: Ballast,
   { load, tolerance }: { readonly load: Amperes; readonly tolerance: Ratio },
 ): string {
-  const rating = ratings.find((each) => each * reserve >= dissipation);
+  const rating = resistorRating(dissipation);
   const watts = formatQuantity(dissipation, 'power', { significant: 2 });
   const take =
     rating === undefined ? 'more than one resistor carries' : `take ${formatQuantity(rating, 'power')} ones`;
