@@ -1,5 +1,5 @@
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
-import { listed } from '../report/listed.js';
+import { listed } from '../quantity/listed.js';
 
 /** What may stand behind `railproof run`. */
 export interface RunOptions {

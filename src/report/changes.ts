@@ -1,6 +1,6 @@
 import { allowedInWords, changeInWords, valueInWords } from '../judgement/change-in-words.js';
 import { changesMissed, type Compared, type Comparison } from '../judgement/compare.js';
-import { listed } from './listed.js';
+import { listed } from '../quantity/listed.js';
 
 /** What changed and by how much, and what can't be told, in a sentence or a few; the worst first. */
 export function changesInWords({ findings, inNeither }: Comparison): readonly string[] {

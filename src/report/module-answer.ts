@@ -1,6 +1,6 @@
 import { type Finding, findingNamed } from '../analysis/finding.js';
 import { inOneLine } from './finding-text.js';
-import { listed } from './listed.js';
+import { listed } from '../quantity/listed.js';
 
 /**
  * What one module is for the one who asked: where and how it gives way, how warm it gets, how its output
