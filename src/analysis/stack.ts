@@ -1,3 +1,4 @@
+import { touchable } from '../circuit/touchable.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
@@ -13,8 +14,6 @@ import { promised, promisedErrors } from './promised-errors.js';
 
 import { howTheStackFailed, weakestModule } from './weakest-module.js';
 
-/** Beyond this a DC voltage may not be touched: ES1 of IEC 62368-1 (from memory; a secondary source for SELV agrees). */
-const touchable: Volts = 60;
 /** A sum that chance makes as wrong as this less often is wrong. */
 const strictLevel = 1e-3;
 

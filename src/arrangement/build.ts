@@ -39,6 +39,8 @@ export interface Concern {
     | 'style-unknown'
     /** Measured cold: no soak showed what it does when warm. */
     | 'not-warmed'
+    /** Nobody knows what its output withstands to earth. */
+    | 'isolation-unknown'
     /** It did not conform, or it failed. */
     | 'not-accepted'
     /** From a simulated bench: for practice only. */

@@ -1,4 +1,4 @@
-import type { Amperes, Ratio } from '../quantity/quantity.js';
+import type { Amperes, Ohms, Ratio } from '../quantity/quantity.js';
 import type { Circuit, Concern, Part, Standing } from './build.js';
 import type { ModuleProfile } from './module-profile.js';
 import type { ParallelWish } from './parallel-build.js';
@@ -52,6 +52,8 @@ export interface Assignment {
   readonly recommended: Amperes;
   /** Of the worst group, at its recommended current. */
   readonly imbalance: Ratio;
+  /** In series with each module; undefined for none. */
+  readonly ballast: Ohms | undefined;
 }
 
 export interface SelectedSupply {

@@ -1,4 +1,4 @@
-import type { Amperes, Volts } from '../quantity/quantity.js';
+import type { Amperes, Volts, Watts } from '../quantity/quantity.js';
 import type { Band, Circuit, Concern, Estimate, Part, Recommendation, Standing } from './build.js';
 import type { ModuleProfile } from './module-profile.js';
 
@@ -20,8 +20,8 @@ export interface SeriesBuild {
   /** That of the weakest. */
   readonly usable: Estimate;
   readonly recommended: Recommendation;
-  /** `sure`: with 95 % it is this one. */
-  readonly weakest: { readonly module: string; readonly sure: boolean };
+  /** `sure`: with 95 % it is this one. `then`: what the string does when more is asked, a sentence. */
+  readonly weakest: { readonly module: string; readonly sure: boolean; readonly then: string };
   readonly rails: readonly Rail[];
   /** Whether anything on it can be above 60 V DC (ES1 of IEC 62368-1), no load. */
   readonly beyondTouchable: boolean;
@@ -50,8 +50,14 @@ export interface ReverseDiode {
   readonly module: string;
   /** The most that the rest can push through it. */
   readonly current: Amperes;
-  /** Of the rest of the string. */
+  /** Set where no record shows that the rest can't push more. */
+  readonly bound?: 'least';
+  /** Of the rest of the string, no load, at its highest. */
   readonly voltage: Volts;
+  /** While the current flows. */
+  readonly heat: Watts;
+  /** What to buy, reserve included. */
+  readonly rating: { readonly current: Amperes; readonly voltage: Volts };
 }
 
 /** What a bond from a module's 0 V to earth would do, the string's 0 V being earthed too. */
