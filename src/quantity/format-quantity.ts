@@ -58,6 +58,34 @@ export function formatUncertain(
   };
 }
 
+/** A value and the interval that holds it, in one unit. An end that there is not is empty. */
+export interface IntervalText {
+  readonly value: string;
+  readonly low: string;
+  readonly high: string;
+  readonly unit: string;
+}
+
+/**
+ * A value between two limits that need not lie alike on both sides of it: as {@link formatUncertain}, all three
+ * to the decimal place of the second digit of the larger distance.
+ * @example formatInterval(9.68, 9.52, 9.85, 'current'); // => { value: '9.68', low: '9.52', high: '9.85', unit: 'A' }
+ */
+export function formatInterval(value: number, low: number, high: number, dimension: Dimension): IntervalText {
+  const ends = [low, high].filter(Number.isFinite);
+  const half = Math.max(0, ...ends.map((end) => Math.abs(end - value)));
+  // What adding and multiplying lose is no interval.
+  if (!(half > 1e-9 * Math.abs(value))) {
+    const { value: text, unit } = formatExact(value, dimension);
+    return { value: text, low: '', high: '', unit };
+  }
+  const text = formatUncertain(value, half, dimension);
+  const scale = scaleNamed(text.unit, dimension);
+  const place = decimalExponent(inScale(half, scale), 2) - 1;
+  const written = (end: number): string => (Number.isFinite(end) ? atPlace(inScale(end, scale), place) : '');
+  return { value: text.value, low: written(low), high: written(high), unit: text.unit };
+}
+
 /** What has no uncertainty, a nominal value or a bound: up to four significant digits, none of them idle. */
 export function formatExact(value: number, dimension: Dimension): UncertainText {
   const text = formatUncertain(value, undefined, dimension);
@@ -78,6 +106,12 @@ function suitableScale(value: number, dimension: Dimension, significant?: number
   const chosen = value === 0 || !Number.isFinite(value) ? unprefixed : (scales.findLast(fits) ?? scales[0]);
   if (chosen === undefined) throw new RangeError(`no unit for ${dimension}`);
   return chosen;
+}
+
+function scaleNamed(symbol: string, dimension: Dimension): Scale {
+  const scale = scalesOf(dimension).find((each) => each.symbol === symbol);
+  if (scale === undefined) throw new RangeError(`no unit ${symbol} for ${dimension}`);
+  return scale;
 }
 
 /** The number alone, in the scale. */

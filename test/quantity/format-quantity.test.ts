@@ -1,6 +1,11 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { formatQuantity, formatShare, formatUncertain } from '../../src/quantity/format-quantity.js';
+import {
+  formatInterval,
+  formatQuantity,
+  formatShare,
+  formatUncertain,
+} from '../../src/quantity/format-quantity.js';
 import { parseQuantity, parseQuantityOrShare } from '../../src/quantity/parse-quantity.js';
 import { dimensions, references, type Dimension, type ReferenceName } from '../../src/quantity/quantity.js';
 
@@ -135,6 +140,21 @@ describe('a result is rounded by its uncertainty', () => {
         expect(Math.abs(uncertainty - expanded)).toBeLessThanOrEqual(0.0501 * expanded);
       }),
     );
+  });
+});
+
+describe('a value within its interval', () => {
+  it.each([
+    [9.683, 9.52, 9.849, 'current', ['9.68', '9.52', '9.85', 'A']],
+    [9.683, 9.68, 9.94, 'current', ['9.68', '9.68', '9.94', 'A']],
+    [0.094, 0.02, 0.101, 'ratio', ['9.4', '2.0', '10.1', '%']],
+    [0.051, 0.0485, 0.0536, 'resistance', ['51.0', '48.5', '53.6', 'mΩ']],
+    [5.1, 5.0, Number.POSITIVE_INFINITY, 'current', ['5.10', '5.00', '', 'A']],
+    [15.2, 15.2, 15.2, 'voltage', ['15.2', '', '', 'V']],
+    [0.3, 0.1 + 0.2, 0.3, 'voltage', ['300', '', '', 'mV']],
+    [Number.NaN, Number.NaN, Number.NaN, 'voltage', ['not a number', '', '', 'V']],
+  ] as const)('%d between %d and %d', (value, low, high, dimension, [text, from, to, unit]) => {
+    expect(formatInterval(value, low, high, dimension)).toEqual({ value: text, low: from, high: to, unit });
   });
 });
 
