@@ -43,13 +43,15 @@ export interface Concern {
     | 'isolation-unknown'
     /** It did not conform, or it failed. */
     | 'not-accepted'
+    /** Its records describe it in different words: perhaps two modules go by one name. */
+    | 'described-otherwise'
     /** From a simulated bench: for practice only. */
     | 'simulated';
   readonly module: string;
   readonly run: string | undefined;
   /** `hinders`: nothing can be decided on it. `weakens`: to be known and weighed. */
   readonly weight: 'hinders' | 'weakens';
-  /** A sentence without its full stop; says what to do about it. */
+  /** A sentence without its full stop, that reads after `K1: `; says what to do about it. */
   readonly text: string;
 }
 

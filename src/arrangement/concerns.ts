@@ -1,0 +1,167 @@
+import { amps, givenPercent } from '../analysis/in-words.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import { listed } from '../quantity/listed.js';
+import type { Concern } from './build.js';
+import { changesSince } from './changes-since.js';
+import type { ModuleProfile, Taken } from './module-profile.js';
+import { earthHeardOf, heardOf, type ModuleRecords, newestOfEach, sourceOf } from './module-records.js';
+import { wasWarmed } from './recommended.js';
+import type { RecordSource } from './understood-record.js';
+import { type Use, usesOf } from './uses.js';
+
+type Profile = Omit<ModuleProfile, 'concerns'>;
+type Told = Pick<Concern, 'kind' | 'text'> & Partial<Pick<Concern, 'run' | 'weight'>>;
+
+/** Capacitors age, and calibrations run out, in about that time. Common practice, no published source. */
+const oldAfterDays = 365;
+/** Of modules whose limits are known no better than this, nobody can say which is the weaker. Chosen, no published source. */
+const coarseLimit = 0.05;
+
+/** What weakens or hinders whatever is built on a module, by the records that its numbers were taken from. */
+export function concernsOf(module: ModuleRecords, profile: Profile, today: Date): readonly Concern[] {
+  const uses = usesOf(profile);
+  const told: readonly Told[] = [
+    ...uses.flatMap(brokenOff),
+    ...uses.flatMap((use) => changed(module, use)),
+    ...uses.flatMap((use) => old(use, today)),
+    ...limitUnknown(profile.usable),
+    ...coarse(profile),
+    ...(profile.limitStyle === undefined ? [styleUnknown] : []),
+    ...(wasWarmed(module) ? [] : [notWarmed]),
+    ...notAccepted(module),
+    ...describedOtherwise(module),
+    ...(uses.some(({ from }) => from.simulated) ? [simulated] : []),
+  ];
+  return told.map(({ kind, text, run, weight = 'weakens' }) => ({
+    kind,
+    module: module.name,
+    run,
+    weight,
+    text,
+  }));
+}
+
+function brokenOff({ from, decides }: Use): readonly Told[] {
+  if (from.state === 'whole') return [];
+  const how = from.state === 'stopped' ? 'was stopped before its end' : 'breaks off without an end';
+  return [
+    {
+      kind: 'cut-off',
+      run: from.run,
+      weight: decides ? 'hinders' : 'weakens',
+      text: `its ${dated(from)} ${how}, and nobody knows what the rest would have shown: run it again`,
+    },
+  ];
+}
+
+function changed(module: ModuleRecords, { from, mustBeFresh }: Use): readonly Told[] {
+  const record = [...module.alone, ...module.together].find(({ run }) => run === from.run);
+  const changes = record === undefined ? [] : changesSince(record, module);
+  if (changes.length === 0) return [];
+  const what = changes.map((change) => `${change.what}, ${change.date}`).join('; ');
+  return [
+    {
+      kind: 'changed-since',
+      run: from.run,
+      weight: mustBeFresh ? 'hinders' : 'weakens',
+      text: `it was changed after its ${dated(from)} (${what}): run ${from.procedure} again`,
+    },
+  ];
+}
+
+function old({ from }: Use, today: Date): readonly Told[] {
+  const days = (today.getTime() - Date.parse(from.began)) / 86_400_000;
+  if (!(days > oldAfterDays)) return [];
+  return [{ kind: 'old', run: from.run, text: `its ${dated(from)} is more than a year old: run it again` }];
+}
+
+function limitUnknown({ bound, value, from }: Taken): readonly Told[] {
+  if (bound === undefined) return [];
+  return [
+    {
+      kind: 'limit-unknown',
+      run: from.run,
+      text: `its ${dated(from)} met no limit up to ${amps(value)}, so where it gives way is not known: run real-limit on it`,
+    },
+  ];
+}
+
+function coarse({ usable, droop }: Profile): readonly Told[] {
+  const limit = halfWidth(usable);
+  const slope = halfWidth(droop);
+  return [
+    ...(limit > coarseLimit * usable.value
+      ? [
+          {
+            kind: 'coarse' as const,
+            run: usable.from.run,
+            text: `its usable current is known to ± ${amps(limit)} only, more than ${givenPercent(coarseLimit)} of it: measure it with a finer search or a better load`,
+          },
+        ]
+      : []),
+    ...(slope > droop.value
+      ? [
+          {
+            kind: 'coarse' as const,
+            run: droop.from.run,
+            text: `its droop can't be told from none, known to ± ${formatQuantity(slope, 'resistance', { significant: 2 })} only: measure it with more points or a better meter`,
+          },
+        ]
+      : []),
+  ];
+}
+
+function halfWidth({ interval: [low, high] }: Taken): number {
+  return (high - low) / 2;
+}
+
+const styleUnknown: Told = {
+  kind: 'style-unknown',
+  text: 'what it does past its limit is not known: run limit-shape on it',
+};
+
+const notWarmed: Told = {
+  kind: 'not-warmed',
+  text: 'it was measured cold, and limits come down as modules warm: run thermal-soak on it',
+};
+
+const simulated: Told = {
+  kind: 'simulated',
+  text: 'it was measured on a simulated bench, for practice only: measure the real one before anything is built',
+};
+
+/** What a later record found again, whatever it found, is not held against it any more. */
+function notAccepted(module: ModuleRecords): readonly Told[] {
+  return newestOfEach(module.alone.map((record) => ({ record }))).flatMap(({ record }) => {
+    const unmet = record.unmet.filter(({ finding }) => {
+      const heard = finding === 'earth-relation' ? earthHeardOf(module) : heardOf(module, finding);
+      return heard.at(-1)?.record === record;
+    });
+    if (unmet.length === 0) return [];
+    const required = unmet.map(({ finding, requirement }) => `${finding} ${requirement}`);
+    return [
+      {
+        kind: 'not-accepted' as const,
+        run: record.run,
+        text: `it did not conform in its ${dated(sourceOf(record))} (required: ${listed(required)}): see that it is good enough for this`,
+      },
+    ];
+  });
+}
+
+function describedOtherwise({ alone }: ModuleRecords): readonly Told[] {
+  const words = [...new Set(alone.flatMap(({ header }) => header.modules.map((one) => one.description)))];
+  if (words.length < 2) return [];
+  const quoted = words.map((one) => `"${one}"`);
+  return [
+    {
+      kind: 'described-otherwise',
+      text: `its records call it ${listed(quoted)}: see that they are of one and the same module`,
+    },
+  ];
+}
+
+/** `isolation of 2026-11-30`. */
+function dated({ procedure, began }: RecordSource): string {
+  return `${procedure} of ${began.slice(0, 10)}`;
+}
