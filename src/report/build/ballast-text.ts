@@ -1,0 +1,36 @@
+import type { ResistorChosen } from '../../arrangement/build.js';
+import type { ParallelBuild } from '../../arrangement/parallel-build.js';
+import { formatQuantity } from '../../quantity/format-quantity.js';
+import { alignTable } from '../align.js';
+import type { Style } from '../style.js';
+import { brief } from './brief.js';
+import { prose, section, sentence } from './prose.js';
+
+/** The resistor in series with each module: what it is, what it bears, what to buy and what it costs. */
+export function ballastText({ ballast, wish }: ParallelBuild, style: Style): string {
+  switch (ballast.kind) {
+    case 'none':
+      return section('Ballast', [prose('None is needed: joined directly they share as wished.')], style);
+    case 'impossible':
+      return section('Ballast', [prose(sentence(`None does what is wished: ${ballast.why}`))], style);
+    case 'resistor': {
+      const wished =
+        wish.ballast.kind === 'given'
+          ? 'as it was given'
+          : `the smallest preferred value for ${formatQuantity(wish.ballast.most, 'ratio')} imbalance`;
+      return section('Ballast', alignTable(rowsOf(ballast), ['left', 'left', 'left']), style, wished);
+    }
+  }
+}
+
+function rowsOf(ballast: ResistorChosen): string[][] {
+  const { resistance, tolerance, dissipation, dissipationAtLimit, rating, voltageCost } = ballast;
+  const shares = `± ${brief(tolerance, 'ratio')}`;
+  return [
+    ['resistance', `${brief(resistance, 'resistance')} ${shares}`, 'in series with each module'],
+    ['buy', rating === undefined ? 'NONE WILL DO' : `${brief(rating, 'power')} or more`, 'each'],
+    ['heat', brief(dissipation, 'power'), 'the most in use'],
+    ['', brief(dissipationAtLimit, 'power'), 'with its module at its limit'],
+    ['cost', brief(voltageCost, 'voltage'), 'across it at full load'],
+  ];
+}

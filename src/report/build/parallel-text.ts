@@ -1,0 +1,139 @@
+import type { ParallelBuild } from '../../arrangement/parallel-build.js';
+import { formatExact, formatQuantity } from '../../quantity/format-quantity.js';
+import type { Dimension } from '../../quantity/quantity.js';
+import { listed } from '../../quantity/listed.js';
+import { roundedDown } from '../../quantity/rounded-down.js';
+import { alignTable } from '../align.js';
+import { printableData } from '../printable.js';
+import type { Style } from '../style.js';
+import { ballastText } from './ballast-text.js';
+import { estimateCells, estimateInWords } from './estimate-text.js';
+import { headingText } from './heading-text.js';
+import { bullets, prose, section, sentence, text } from './prose.js';
+import { cautionsText, partsText } from './parts-text.js';
+import { concernsText, sourcesText } from './records-text.js';
+import { sharesText } from './shares-text.js';
+import { standingText } from './standing-text.js';
+
+/** Modules side by side, for a terminal or a text file: the answer first, then what it rests on. */
+export function parallelAsText(worked: ParallelBuild, style: Style): string {
+  const build = printableData(worked);
+  return text([
+    headingText(`${namesOf(build)} in parallel`, build.modules, style),
+    answer(build, style),
+    groupText(build, style),
+    ballastText(build, style),
+    sharesText(build, style),
+    withoutBallastText(build, style),
+    failuresText(build, style),
+    partsText(build, style),
+    cautionsText(build, style),
+    concernsText(build.concerns, style),
+    sourcesText(build.modules, style),
+  ]);
+}
+
+function namesOf({ modules }: ParallelBuild): string {
+  return listed(modules.map(({ name }) => name));
+}
+
+function answer(build: ParallelBuild, style: Style): string {
+  const first = standingText(build, { what: what(build), tooLittle: tooLittle(build) }, style);
+  const { standing } = build;
+  const more = standing.kind === 'may-be-built' ? [setBy(build), inTurn(build), notTheSum(build)] : [];
+  return [first, ...more.filter((said) => said !== '').map((said) => prose(sentence(said)))].join('\n');
+}
+
+function what(build: ParallelBuild): string {
+  return `${sideBySide(build)} feed up to ${roundedDown(build.recommended.current, 'current')} continuously`;
+}
+
+function tooLittle(build: ParallelBuild): string {
+  return `${what(build)}, and ${amperes(build.load.current)} is asked for`;
+}
+
+function sideBySide(build: ParallelBuild): string {
+  const { ballast } = build;
+  const through =
+    ballast.kind === 'resistor' ? ` through ${formatQuantity(ballast.resistance, 'resistance')} each` : '';
+  return `${namesOf(build)} side by side${through}`;
+}
+
+function setBy({ recommended }: ParallelBuild): string {
+  return `What sets it: ${recommended.setBy}`;
+}
+
+/** Who meets the limit first, and what comes of it. */
+function inTurn({ firstToSaturate: { module, load, probability, then } }: ParallelBuild): string {
+  const sure = probability > 0.95 ? '' : `, with a probability of ${percent(probability)}`;
+  return `${module} reaches its limit first, at a load of ${estimateInWords(load, 'current')}${sure}: ${then}`;
+}
+
+/** That nobody takes the sum of labels for the group. */
+function notTheSum({ sumOfSingles, recommended, modules }: ParallelBuild): string {
+  if (sumOfSingles.recommended <= recommended.current * 1.005) return '';
+  return `It is not the ${roundedDown(sumOfSingles.recommended, 'current')} that the ${modules.length} could feed one by one, added up`;
+}
+
+function groupText(build: ParallelBuild, style: Style): string {
+  const { atLoad, load, usable, firstToSaturate, standing } = build;
+  const at = `at ${amperes(load.current)}`;
+  const may = standing.kind === 'may-be-built' ? 'recommended' : 'by these numbers alone';
+  const [imbalance, worst] = estimateCells(atLoad.imbalance, 'ratio');
+  const row = (name: string, estimate: typeof usable, dimension: Dimension): string[] => [
+    name,
+    ...estimateCells(estimate, dimension),
+  ];
+  const rows = [
+    row('usable', usable, 'current'),
+    [may, roundedDown(build.recommended.current, 'current'), 'continuously'],
+    row(`first at its limit: ${firstToSaturate.module}`, firstToSaturate.load, 'current'),
+    row(`voltage ${at}`, atLoad.busVoltage, 'voltage'),
+    [`imbalance ${at}`, imbalance, worst === '' ? '' : `${worst}, every tolerance at its worst`],
+  ];
+  return section(
+    'The group',
+    alignTable(rows, ['left', 'right', 'left']),
+    style,
+    'value and its 95 % limits',
+  );
+}
+
+function withoutBallastText(build: ParallelBuild, style: Style): string {
+  if (build.ballast.kind === 'none') return '';
+  const { withoutBallast, load } = build;
+  const imbalance = estimateInWords(withoutBallast.imbalance, 'ratio');
+  const hog = withoutBallast.hog === undefined ? '' : `; ${withoutBallast.hog} carries most`;
+  const lines = [
+    `At ${amperes(load.current)} the imbalance would be ${imbalance}${hog}`,
+    `As a whole it would fail at ${amperes(withoutBallast.failsAt)}`,
+    ...withoutBallast.story,
+  ];
+  return section('Without ballast', bullets(lines), style);
+}
+
+const rests = {
+  'carries-it': 'the rest carries the load',
+  overloaded: 'THE REST IS OVERLOADED',
+  fails: 'THE REST FAILS',
+} as const;
+
+function failuresText(build: ParallelBuild, style: Style): string {
+  const lines = build.failures.flatMap(({ module, recommended, usable, rest, sentences }) => [
+    prose(
+      `Without ${module} ${rests[rest]}: ${roundedDown(recommended, 'current')} continuously, ${roundedDown(usable, 'current')} at most.`,
+    ),
+    ...bullets(sentences),
+  ]);
+  return section('When one fails or is switched off', lines, style, `at ${amperes(build.load.current)}`);
+}
+
+function amperes(value: number): string {
+  const { value: number, unit } = formatExact(value, 'current');
+  return `${number} ${unit}`;
+}
+
+/** Never all and never nothing: nothing measured is that sure. */
+function percent(probability: number): string {
+  return `${Math.min(99, Math.max(1, Math.round(100 * probability)))} %`;
+}

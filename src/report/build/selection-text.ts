@@ -1,0 +1,101 @@
+import type { Assignment, SelectedSupply, Selection } from '../../arrangement/selection.js';
+import { formatQuantity } from '../../quantity/format-quantity.js';
+import { listed } from '../../quantity/listed.js';
+import { roundedDown } from '../../quantity/rounded-down.js';
+import { alignTable } from '../align.js';
+import { printableData } from '../printable.js';
+import type { Style } from '../style.js';
+import { brief } from './brief.js';
+import { headingText } from './heading-text.js';
+import { cautionsText, partsText } from './parts-text.js';
+import { bullets, prose, section, sentence, text } from './prose.js';
+import { concernsText, sourcesText } from './records-text.js';
+import { standingText } from './standing-text.js';
+
+/** Which modules of a drawer to put together, for a terminal or a text file. */
+export function selectionAsText(worked: Selection, style: Style): string {
+  const selection = printableData(worked);
+  const { best, next } = selection;
+  return text([
+    headingText(title(selection), selection.modules, style),
+    answer(selection, style),
+    best === undefined ? '' : assignmentText('Best', best, style),
+    next === undefined ? '' : assignmentText('Next best', next, style),
+    restText(selection, style),
+    partsText(selection, style),
+    cautionsText(selection, style),
+    concernsText(selection.concerns, style),
+    sourcesText(selection.modules, style),
+  ]);
+}
+
+function title({ wish }: Selection): string {
+  const supplies = wish.supplies === 1 ? 'One supply' : `${wish.supplies} supplies`;
+  return `${supplies} out of a drawer: ${wished(wish)}`;
+}
+
+function wished({ group, stack, supplies }: Selection['wish']): string {
+  const each = supplies === 1 ? '' : ' each';
+  if (stack === 1) return group === 1 ? `one module${each}` : `${group} modules${each} side by side`;
+  return group === 1 ? `${stack} modules${each} in a stack` : `${stack} groups of ${group}${each} in a stack`;
+}
+
+function answer(selection: Selection, style: Style): string {
+  const { best, margin, standing } = selection;
+  const what = best === undefined ? '' : feeds(best);
+  const first = standingText(selection, { what, tooLittle: what }, style);
+  const more =
+    standing.kind === 'may-be-built' && margin !== undefined ? [prose(sentence(margin.sentence))] : [];
+  return [first, ...more].join('\n');
+}
+
+function feeds({ supplies, recommended }: Assignment): string {
+  const each = supplies.length === 1 ? 'feeds' : 'each feed';
+  return `${listed(supplies.map(inSigns))} ${each} up to ${roundedDown(recommended, 'current')} continuously`;
+}
+
+/** `K1 ∥ K2`, `(K1 ∥ K2) + (K3 ∥ K4)`, the lowest first. */
+function inSigns({ groups }: SelectedSupply): string {
+  const signs = groups.map(({ modules }) => modules.join(' ∥ '));
+  if (signs.length === 1) return signs[0] ?? '';
+  return signs.map((each) => (each.includes('∥') ? `(${each})` : each)).join(' + ');
+}
+
+function assignmentText(
+  name: string,
+  { supplies, recommended, imbalance, ballast }: Assignment,
+  style: Style,
+): string {
+  const head = ['', 'continuously', 'worst imbalance'];
+  const rows = supplies.map((supply) => [
+    inSigns(supply),
+    roundedDown(supply.recommended, 'current'),
+    supply.groups.some(({ modules }) => modules.length > 1)
+      ? inPercent(Math.max(...supply.groups.map((group) => group.imbalance)))
+      : '',
+  ]);
+  const weakest =
+    supplies.length === 1
+      ? []
+      : [['weakest of them', roundedDown(recommended, 'current'), imbalance > 0 ? inPercent(imbalance) : '']];
+  const through = ballast === undefined ? '' : `through ${formatQuantity(ballast, 'resistance')} each; `;
+  return section(
+    name,
+    alignTable([head, ...rows, ...weakest], ['left', 'right', 'right']),
+    style,
+    `${through}∥ side by side, + in a stack, the lowest first`,
+  );
+}
+
+function restText({ unused, leftOut, considered }: Selection, style: Style): string {
+  const lines = [
+    ...(unused.length === 0 ? [] : [`Left over: ${listed(unused)}`]),
+    ...leftOut.map(({ module, why }) => `${module} was left out: ${why}`),
+    ...(considered > 1 ? [`${considered} assignments were compared`] : []),
+  ];
+  return section('The rest of the drawer', bullets(lines), style);
+}
+
+function inPercent(ratio: number): string {
+  return brief(Number(ratio.toPrecision(2)), 'ratio');
+}

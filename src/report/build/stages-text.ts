@@ -1,0 +1,157 @@
+import type { Guaranteed, Movement, MovementVerdict, StagedBuild } from '../../arrangement/staged-build.js';
+import { roundedDown } from '../../quantity/rounded-down.js';
+import { alignTable } from '../align.js';
+import { printableData } from '../printable.js';
+import type { Style } from '../style.js';
+import { brief, briefDigits } from './brief.js';
+import { dissipationText } from './dissipation-text.js';
+import { estimateCells } from './estimate-text.js';
+import { formInSigns } from './form-text.js';
+import { headingText } from './heading-text.js';
+import { cautionsText, partsText } from './parts-text.js';
+import { bullets, prose, section, sentence, text } from './prose.js';
+import { concernsText, sourcesText } from './records-text.js';
+import { standingText } from './standing-text.js';
+
+/** A staged supply, for a terminal or a text file: the answer first, then what it rests on. */
+export function stagesAsText(worked: StagedBuild, style: Style): string {
+  const build = printableData(worked);
+  return text([
+    headingText(`${build.wish.name}: ${build.wish.title}`, build.modules, style),
+    answer(build, style),
+    guaranteedText(build, style),
+    arrangementsText(build, style),
+    switchOversText(build, style),
+    movementsText(build, style),
+    dissipationText(build, style),
+    partsText(build, style),
+    cautionsText(build, style),
+    concernsText(build.concerns, style),
+    sourcesText(build.modules, style),
+  ]);
+}
+
+function answer(build: StagedBuild, style: Style): string {
+  const { wish, guaranteed } = build;
+  const all = guaranteed.flatMap(({ output, rising, falling }) =>
+    [rising, falling].map(({ current }) => ({ output, current })),
+  );
+  const least = all.reduce((one, other) => (other.current < one.current ? other : one), all[0] ?? none);
+  const most = all.reduce((one, other) => (other.current > one.current ? other : one), all[0] ?? none);
+  const range = `from ${brief(wish.output.from, 'voltage')} to ${brief(wish.output.to, 'voltage')}`;
+  const what = `${wish.name} gives ${range}, and at least ${roundedDown(least.current, 'current')} anywhere in it, with the least at ${brief(least.output, 'voltage')} and the most, ${roundedDown(most.current, 'current')}, at ${brief(most.output, 'voltage')}`;
+  return standingText(build, { what, tooLittle: what }, style);
+}
+
+const none = { output: Number.NaN, current: 0 };
+
+const limits: Readonly<Record<Guaranteed['setBy'], string>> = {
+  module: 'the modules',
+  ballast: 'the ballast',
+  dissipation: "the linear stage's heat",
+  'drop-out': "the linear stage's drop-out",
+  'linear-stage': "the linear stage's own limit",
+};
+
+/** Stretches of the output over which the same arrangement feeds it and the same thing sets the current. */
+function guaranteedText(build: StagedBuild, style: Style): string {
+  const stretches: { from: number; to: number; first: Guaranteed; last: Guaranteed }[] = [];
+  for (const { output, rising } of build.guaranteed) {
+    const open = stretches.at(-1);
+    if (open?.last.arrangement === rising.arrangement && open.last.setBy === rising.setBy) {
+      open.to = output;
+      open.last = rising;
+    } else stretches.push({ from: output, to: output, first: rising, last: rising });
+  }
+  const rows = stretches.map(({ from, to, first, last }) => [
+    from === to ? briefDigits(from) : `${briefDigits(from)} to ${briefDigits(to)}`,
+    spanOf(first.current, last.current),
+    first.arrangement,
+    limits[first.setBy],
+  ]);
+  const head = ['output, V', 'at least', 'from', 'set by'];
+  return section(
+    'What it is guaranteed to feed',
+    alignTable([head, ...rows], ['left', 'left', 'left', 'left']),
+    style,
+    'output rising',
+  );
+}
+
+function spanOf(from: number, to: number): string {
+  const [first, last] = [roundedDown(from, 'current'), roundedDown(to, 'current')];
+  return first === last ? first : `${first} to ${last}`;
+}
+
+function arrangementsText({ arrangements }: StagedBuild, style: Style): string {
+  const head = ['', '', 'no load', 'full current', 'at most', 'set by'];
+  const rows = arrangements.map(({ name, circuit, openVoltage, fullVoltage, current, setBy }) => [
+    name,
+    formInSigns(circuit.form),
+    estimateCells(openVoltage, 'voltage')[0],
+    estimateCells(fullVoltage, 'voltage')[0],
+    roundedDown(current, 'current'),
+    setBy,
+  ]);
+  const closed = arrangements.map(({ name, closed: contacts }) =>
+    prose(contacts.length === 0 ? 'no contact closed' : `closed: ${contacts.join(', ')}`, `${name}: `),
+  );
+  return section(
+    'Arrangements',
+    [...alignTable([head, ...rows], ['left', 'left', 'right', 'right', 'right', 'left']), ...closed],
+    style,
+    '∥ side by side, + in a stack, the lowest first',
+  );
+}
+
+function switchOversText({ switchOvers }: StagedBuild, style: Style): string {
+  const head = ['', 'up at', 'back at', 'input jumps by, no load', 'full load'];
+  const rows = switchOvers.map(({ lower, upper, up, down, swing }) => [
+    `${lower} → ${upper}`,
+    brief(up, 'voltage'),
+    brief(down, 'voltage'),
+    brief(swing.noLoad, 'voltage'),
+    brief(swing.fullLoad, 'voltage'),
+  ]);
+  return section(
+    'Switch-overs',
+    rows.length === 0 ? [] : alignTable([head, ...rows], ['left', 'right', 'right', 'right', 'right']),
+    style,
+    'by the output voltage',
+  );
+}
+
+/** What the contacts pass through while they move; the order that the builder chose decides. */
+function movementsText({ switchOvers, wish }: StagedBuild, style: Style): string {
+  const lines = switchOvers.flatMap((over) => [
+    ...movementLines(`${over.lower} → ${over.upper}`, over.goingUp, wish.sequence),
+    ...movementLines(`${over.upper} → ${over.lower}`, over.comingDown, wish.sequence),
+  ]);
+  return section('While the contacts move', bullets(lines), style, `driven ${inWords[wish.sequence]}`);
+}
+
+const inWords = {
+  'any-order': 'in any order',
+  'break-before-make': 'break before make',
+  'make-before-break': 'make before break',
+} as const;
+
+function movementLines(what: string, movement: Movement, sequence: keyof typeof inWords): string[] {
+  const decisive = movement.bySequence[sequence];
+  const others = (Object.keys(inWords) as (keyof typeof inWords)[])
+    .filter((each) => each !== sequence)
+    .map((each) => `${inWords[each]} ${shortly(movement.bySequence[each])}`);
+  return [`${what} (${movement.moving.join(', ')}): ${atLength(decisive)} Else: ${others.join('; ')}`];
+}
+
+function shortly(verdict: MovementVerdict): string {
+  if (verdict.kind === 'forbidden') return 'would be forbidden';
+  return verdict.interrupts ? 'would be clear, the feed interrupted' : 'would be clear';
+}
+
+function atLength(verdict: MovementVerdict): string {
+  if (verdict.kind === 'forbidden')
+    return `FORBIDDEN when ${verdict.order.join(', then ')}: ${sentence(verdict.connection.sentence)}`;
+  const states = verdict.states === 1 ? 'the one state' : `all ${verdict.states} states`;
+  return `clear in ${states}${verdict.interrupts ? '; the feed is interrupted for a moment' : ''}.`;
+}
