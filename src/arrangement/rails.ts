@@ -1,0 +1,47 @@
+import { formatQuantity } from '../quantity/format-quantity.js';
+import { railVoltages } from '../circuit/rail-voltages.js';
+import type { Volts } from '../quantity/quantity.js';
+import { addedUp } from './added-up.js';
+import type { ModuleProfile } from './module-profile.js';
+import type { Rail } from './series-build.js';
+
+/** What a rail's top reaches at its highest is what its isolation must bear. */
+type Place = Pick<Rail, 'top' | 'isolation'>;
+
+/**
+ * Where each output of a string stands with no load, the lowest first: Σ of the open-circuit voltages below it,
+ * and with its own. The string's 0 V is taken to be earthed, at that point and no other, so each output's
+ * isolation to earth has to bear what its upper end stands at, taken at the upper end of its interval.
+ */
+export function railsOf(profiles: readonly ModuleProfile[]): readonly Rail[] {
+  const floats = railVoltages(profiles.map(({ openCircuit }) => openCircuit.value));
+  return profiles.map((profile, below) => {
+    const upTo = (end: number) =>
+      addedUp(profiles.slice(0, end).map(({ openCircuit }) => ({ taken: openCircuit, times: 1 })));
+    const { name: module, outputIsolation: isolation } = profile;
+    const float = { ...upTo(below), value: floats[below] ?? 0 };
+    const top = upTo(below + 1);
+    return {
+      module,
+      float,
+      top,
+      isolation,
+      verdict: below === 0 ? 'not-needed' : verdictOn({ top, isolation }),
+    };
+  });
+}
+
+function verdictOn({ top, isolation }: Place): Rail['verdict'] {
+  if (isolation === 'unknown') return 'unknown';
+  return top.high <= isolation ? 'within' : 'beyond';
+}
+
+/** The highest that anything on the string can stand at. */
+export function highestOf(rails: readonly Rail[]): Volts {
+  return Math.max(0, ...rails.map(({ top }) => top.high));
+}
+
+/** How a sentence writes what a rail stands at: fine enough to show on which side of a limit it is. */
+export function railVolts(voltage: Volts): string {
+  return formatQuantity(voltage, 'voltage', { significant: 4 });
+}

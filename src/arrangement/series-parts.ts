@@ -1,0 +1,49 @@
+import { amps, ratedAmperes } from '../analysis/in-words.js';
+import { formatExact } from '../quantity/format-quantity.js';
+import type { Volts } from '../quantity/quantity.js';
+import type { Part } from './build.js';
+import { moduleParts } from './module-parts.js';
+import type { ModuleProfile } from './module-profile.js';
+import type { ReverseDiode } from './series-build.js';
+
+/** What is bought for a string: its modules, and a diode across each, alike ones on one line. */
+export function seriesParts(
+  profiles: readonly ModuleProfile[],
+  diodes: readonly ReverseDiode[],
+): readonly Part[] {
+  const marked = diodes.map((diode, index) => ({ mark: `D${index + 1}`, diode }));
+  const ratings = [...new Set(marked.map(({ diode }) => ratingOf(diode)))];
+  return [
+    ...moduleParts(profiles),
+    ...ratings.map((rating): Part => {
+      const alike = marked.filter(({ diode }) => ratingOf(diode) === rating);
+      return {
+        marks: alike.map(({ mark }) => mark),
+        what: 'rectifier diode across the output of each module, cathode to the plus',
+        ratings: rating.split(separator),
+        why: whyOf(alike.map(({ diode }) => diode)),
+      };
+    }),
+  ];
+}
+
+const separator = ', ';
+
+function ratingOf({ rating: { current, voltage } }: ReverseDiode): string {
+  return [`at least ${ratedAmperes(current)}`, `${volts(voltage)} reverse`].join(separator);
+}
+
+function whyOf(diodes: readonly ReverseDiode[]): string {
+  const most = Math.max(...diodes.map(({ current }) => current));
+  const voltage = Math.max(...diodes.map((diode) => diode.voltage));
+  const heat = Math.max(...diodes.map((diode) => diode.heat));
+  const atLeast = diodes.some(({ bound }) => bound === 'least')
+    ? ' at least, as not all records show how much more it may be'
+    : '';
+  return `when a module fails, the others push up to ${amps(most)}${atLeast} through its diode; without it the failed output is driven backwards by up to ${volts(voltage)}. That makes up to ${formatExact(heat, 'power').value} W of heat until the load is off: give it a heat sink, or a thermal switch that takes the load off`;
+}
+
+function volts(voltage: Volts): string {
+  const { value, unit } = formatExact(voltage, 'voltage');
+  return `${value} ${unit}`;
+}
