@@ -8,6 +8,7 @@ export const headers = {
   driver: 'driver 1',
   procedure: 'procedure 1',
   tolerance: 'tolerance 1',
+  stages: 'stages 1',
 } as const;
 
 export type FileKind = keyof typeof headers;

@@ -5,6 +5,7 @@ import { driverSchema } from './driver-schema.js';
 import type { FileKind } from './file-kind.js';
 import { moduleSchema } from './module-schema.js';
 import { procedureSchema } from './procedure-schema.js';
+import { stagesSchema } from './stages-schema.js';
 import { toleranceEntrySchema, toleranceSchema } from './tolerance-schema.js';
 import type { Vocabulary } from './vocabulary.js';
 
@@ -30,6 +31,8 @@ export function jsonSchemaOf(kind: FileKind, vocabulary?: Vocabulary): JsonSchem
       const schema = asWritten(toleranceSchema);
       return vocabulary === undefined ? schema : withEntries(schema, vocabulary);
     }
+    case 'stages':
+      return asWritten(stagesSchema);
   }
 }
 

@@ -7,8 +7,10 @@ import { parseBench } from './read-bench.js';
 import { parseDriver } from './read-driver.js';
 import { parseModule } from './read-module.js';
 import { parseProcedure } from './read-procedure.js';
+import { parseStages } from './read-stages.js';
 import { readAndParse, type FileRead } from './read-text.js';
 import { parseTolerance } from './read-tolerance.js';
+import type { Stages } from './stages.js';
 import type { Tolerance } from './tolerance.js';
 import type { Vocabulary } from './vocabulary.js';
 
@@ -18,7 +20,8 @@ export type AnyFile =
   | { readonly kind: 'bench'; readonly content: Bench }
   | { readonly kind: 'driver'; readonly content: Driver }
   | { readonly kind: 'procedure'; readonly content: Procedure }
-  | { readonly kind: 'tolerance'; readonly content: Tolerance };
+  | { readonly kind: 'tolerance'; readonly content: Tolerance }
+  | { readonly kind: 'stages'; readonly content: Stages };
 
 /**
  * Reads a file as what its first line says it is.
@@ -38,6 +41,8 @@ export function readAnyFile(path: string, vocabulary: Vocabulary): Promise<FileR
         return { kind, content: parseProcedure(text, fileName, vocabulary) };
       case 'tolerance':
         return { kind, content: parseTolerance(text, fileName, vocabulary) };
+      case 'stages':
+        return { kind, content: parseStages(text, fileName) };
     }
   });
 }

@@ -95,6 +95,33 @@ findings:
   - { finding: limit-style, same: true }
 `;
 
+export const stagesExample = `railproof: stages 1
+name: potting-bench
+title: 0 to 32 V for the valve bench
+modules:
+  W1: [runs/W1-real-limit, runs/W1-isolation]
+  W2: [runs/W2-real-limit]
+  W3: [runs/W3-real-limit]
+ballast: { resistance: 51 mΩ, rating: 3 W }
+wires:
+  - [W1-, in-]
+  - [W2+, W3-]
+contacts:
+  S1: { makes: [W1+, W2+] }
+  S2: { breaks: [W2-, in-] }
+  S3: { common: in+, rest: W2+, driven: W3+ }
+  S4: { makes: [W1+, W2-] }
+diodes:
+  D1: { from: W1+, to: in+, forward: 0.5 V }
+arrangements:
+  low: { group: [W1, W2], driven: [S1] }
+  high: { stack: [W1, W2, W3], driven: [S2, S3, S4] }
+sequence: break-before-make
+linear-stage: { drop-out: 2 V, current: 5 A, dissipation: { full: 60 W, full-to: 25 °C, none-at: 150 °C, case: 85 °C } }
+output: { from: 0 V, to: 32 V }
+hysteresis: 1 V
+`;
+
 /** A vocabulary of our own with the shape of the real one, which lives in other rooms. */
 export const vocabulary: Vocabulary = {
   words: { 'limit-style': ['constant-current', 'foldback', 'hiccup'] },

@@ -8,6 +8,7 @@ import {
   moduleExample,
   procedureExample,
   simulationExample,
+  stagesExample,
   toleranceExample,
   vocabulary,
 } from './design-examples.js';
@@ -18,6 +19,7 @@ const examples: Record<FileKind, string> = {
   driver: driverExample,
   procedure: procedureExample,
   tolerance: toleranceExample,
+  stages: stagesExample,
 };
 
 /** A part of a file with a bare number in it, and where that stands. */
@@ -27,6 +29,7 @@ const bareNumbers: Record<FileKind, readonly [object, string]> = {
   driver: [{ ratings: { voltage: 4 } }, '/ratings/voltage'],
   procedure: [{ derating: { margin: 4 } }, '/derating/margin'],
   tolerance: [{ findings: [{ finding: 'usable-current', within: 4 }] }, '/findings/0/within'],
+  stages: [{ output: { from: 4 } }, '/output/from'],
 };
 
 describe.each([...fileKinds])('the schema of a %s', (kind) => {

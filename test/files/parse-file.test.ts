@@ -24,7 +24,7 @@ describe('the first line says what a file is', () => {
     ],
     [
       'railproof: invoice 1',
-      "a.yaml:1:12: railproof: no kind of file is called 'invoice'; one of module, bench, driver, procedure, tolerance is needed",
+      "a.yaml:1:12: railproof: no kind of file is called 'invoice'; one of module, bench, driver, procedure, tolerance, stages is needed",
     ],
     ['railproof: module', "a.yaml:1:12: railproof: the version is missing; this railproof reads 'module 1'"],
     [
