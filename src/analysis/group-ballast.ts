@@ -54,7 +54,7 @@ export function recommendedBallast(
     case 'too-costly':
       return inWords('recommended-ballast', 'none', {
         step,
-        note: whyNot(outcome, { tolerance, asked: `where ${asked} are asked for` }),
+        note: whyNoBallast(outcome, { tolerance, asked: `where ${asked} are asked for` }),
       });
   }
 }
@@ -87,7 +87,8 @@ function foundInWords(
   );
 }
 
-function whyNot(
+/** Why no resistor does what is asked of a ballast; `asked` reads after a number: `where 10 % are asked for`. */
+export function whyNoBallast(
   outcome: Extract<BallastOutcome, { kind: 'too-coarse' | 'too-costly' }>,
   { tolerance, asked }: { readonly tolerance: Ratio; readonly asked: string },
 ): string {

@@ -1,14 +1,14 @@
 import type { Amperes, Volts, Watts } from '../quantity/quantity.js';
 import { addedUp } from './added-up.js';
+import { gradeFor } from './diode-grade.js';
 import type { ModuleProfile } from './module-profile.js';
+import { mostCurrentOf } from './most-current.js';
 import type { ReverseDiode } from './series-build.js';
 
 /** Above what it has to bear. Common practice, no published source. */
 const reserve = 1.5;
 /** Across a silicon rectifier that is worked hard, in V; common practice, from memory. */
 const forwardDrop: Volts = 1.1;
-/** What rectifiers are sold for, in V. Common practice, no published source. */
-const grades: readonly Volts[] = [20, 40, 60, 100, 200, 400, 600, 800, 1000];
 
 /**
  * The diode across each output, its cathode to the plus. In use it blocks its module's own voltage. When that
@@ -26,7 +26,7 @@ const grades: readonly Volts[] = [20, 40, 60, 100, 200, 400, 600, 800, 1000];
 export function reverseDiodesOf(profiles: readonly ModuleProfile[]): readonly ReverseDiode[] {
   return profiles.map((profile) => {
     const rest = profiles.filter((each) => each !== profile);
-    const pushed = rest.map(mostOf);
+    const pushed = rest.map(mostCurrentOf);
     const current = Math.max(0, ...pushed.map((most) => most.current));
     const voltage = addedUp(rest.map(({ openCircuit }) => ({ taken: openCircuit, times: 1 }))).high;
     const blocked = Math.max(voltage, profile.openCircuit.interval[1]);
@@ -43,22 +43,4 @@ export function reverseDiodesOf(profiles: readonly ModuleProfile[]): readonly Re
 
 function heatAt(current: Amperes): Watts {
   return forwardDrop * current;
-}
-
-function gradeFor(voltage: Volts): Volts {
-  return grades.find((grade) => grade >= voltage) ?? Math.ceil(voltage / 100) * 100;
-}
-
-/** Known where records went to its limit, and into a short circuit where its style lets that be more. */
-function mostOf({ usable, dropout, shortCircuit, limitStyle }: ModuleProfile): {
-  readonly current: Amperes;
-  readonly isKnown: boolean;
-} {
-  const ends = [usable, dropout, shortCircuit].flatMap((taken) => taken?.interval[1] ?? []);
-  const growsBeyond = limitStyle?.word === 'constant-current' || limitStyle?.word === 'constant-power';
-  return {
-    current: Math.max(...ends),
-    isKnown:
-      limitStyle !== undefined && dropout !== undefined && !(growsBeyond && shortCircuit === undefined),
-  };
 }

@@ -6,8 +6,11 @@ import { type GroupModule, worstDissipation, worstSharing } from './worst-sharin
 export interface BallastWanted {
   /** At least two; voltages in V, droops in Ω, each with its expanded uncertainty. */
   readonly modules: readonly GroupModule[];
-  /** The full load of the whole group, in A. */
-  readonly load: number;
+  /**
+   * The full load of the whole group, in A, above 0; where it depends on the ballast, such as what the group may
+   * be asked for once it shares better, that of each ballast in Ω.
+   */
+  readonly load: number | ((ballast: number) => number);
   /** The most that (I_max − I_min)/I_mean may be at full load; above 0 and below 1. */
   readonly imbalance: number;
   /** Of the resistor: 0.05 for ± 5 %; from 0 to below 1. */
@@ -56,19 +59,23 @@ const usualCost = 0.1;
  */
 export function smallestBallast(wanted: BallastWanted): BallastOutcome {
   requireSense(wanted);
-  const { modules, load, tolerance, series, mostCost = usualCost } = wanted;
-  const worst = (ballast: number) => worstSharing({ modules, load, tolerance, ballast });
+  const { modules, tolerance, series, mostCost = usualCost } = wanted;
+  const loadOf = (ballast: number): number =>
+    typeof wanted.load === 'function' ? wanted.load(ballast) : wanted.load;
+  const worst = (ballast: number) => worstSharing({ modules, load: loadOf(ballast), tolerance, ballast });
   const direct = worst(0);
   if (direct.imbalance <= wanted.imbalance) return { kind: 'unneeded', imbalance: direct.imbalance };
-  const share = load / modules.length;
   const lowest = Math.min(...modules.map(({ openCircuit }) => openCircuit.value));
   let largest = 0;
   let left = direct.imbalance;
-  for (const value of preferredFrom(smallest, (mostCost * lowest) / share, series)) {
+  for (const value of preferredFrom(smallest, Number.MAX_VALUE, series)) {
+    const load = loadOf(value);
+    const voltageCost = (value * load) / modules.length;
+    if (voltageCost > mostCost * lowest) break;
     const { imbalance, mostCurrent } = worst(value);
     if (imbalance <= wanted.imbalance) {
       const dissipation = worstDissipation({ modules, load, tolerance, ballast: value });
-      return { kind: 'found', value, imbalance, mostCurrent, dissipation, voltageCost: value * share };
+      return { kind: 'found', value, imbalance, mostCurrent, dissipation, voltageCost };
     }
     largest = value;
     left = imbalance;
@@ -96,7 +103,7 @@ function requireSense({ modules, load, imbalance, tolerance, mostCost = usualCos
     if (!(openCircuit.value > 0 && droop.value >= 0)) refuse('a module has no voltage, or a negative droop');
     if (!(openCircuit.expanded >= 0 && droop.expanded >= 0)) refuse('an uncertainty is missing');
   }
-  if (!(load > 0 && Number.isFinite(load))) refuse(`the load is ${load} A`);
+  if (typeof load === 'number' && !(load > 0 && Number.isFinite(load))) refuse(`the load is ${load} A`);
   if (!(imbalance > 0 && imbalance < 1)) refuse(`the wanted imbalance is ${imbalance}`);
   if (!(tolerance >= 0 && tolerance < 1)) refuse(`the tolerance is ${tolerance}`);
   if (!(mostCost > 0 && mostCost < 1)) refuse(`the most that it may cost is ${mostCost}`);
