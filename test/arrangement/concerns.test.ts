@@ -1,0 +1,176 @@
+import { describe, expect, it } from 'vitest';
+import type { Concern } from '../../src/arrangement/build.js';
+import { profilesOf } from '../../src/arrangement/profiles.js';
+import type { UnderstoodRecord } from '../../src/arrangement/understood-record.js';
+import { amperes, limitFindings, lookFindings, madeRecord, word } from './made-record.js';
+
+const today = new Date('2026-12-02T12:00:00Z');
+const rise = word('temperature-rise', '35');
+const warmed = [...limitFindings(), rise];
+const cut = { date: '2026-11-14', what: 'link from output to earth removed' };
+
+function concerns(records: readonly UnderstoodRecord[], on = today): readonly Concern[] {
+  const [profile] = profilesOf(records, on).profiles;
+  if (profile === undefined) throw new Error('unfit');
+  return profile.concerns;
+}
+
+function isolation(on: string, relation: string, changes: readonly (typeof cut)[] = []): UnderstoodRecord {
+  return madeRecord({
+    on,
+    procedure: 'isolation',
+    modules: [{ name: 'K1', changes: [...changes] }],
+    findings: [word('earth-relation', relation)],
+    unmet: relation === 'isolated' ? [] : [{ finding: 'earth-relation', requirement: 'is isolated' }],
+  });
+}
+
+describe('what a builder must know of the records', () => {
+  it('is nothing of a fresh and whole one with a known limit and a soak', () => {
+    expect(concerns([madeRecord({ findings: warmed })])).toEqual([]);
+  });
+
+  it('is what it lacks, and what to do about it', () => {
+    const cold = concerns([madeRecord()]);
+    expect(cold).toEqual([
+      {
+        kind: 'not-warmed',
+        module: 'K1',
+        run: undefined,
+        weight: 'weakens',
+        text: 'it was measured cold, and limits come down as modules warm: run thermal-soak on it',
+      },
+    ]);
+    const look = concerns([madeRecord({ procedure: 'quick-look', findings: [...lookFindings(), rise] })]);
+    expect(look.map(({ kind, text }) => `${kind}: ${text}`)).toEqual([
+      'limit-unknown: its quick-look of 2026-11-30 met no limit up to 4.00 A, so where it gives way is not known: run real-limit on it',
+      'style-unknown: what it does past its limit is not known: run limit-shape on it',
+    ]);
+  });
+
+  it('is its age, from a year and a day on', () => {
+    const records = [madeRecord({ findings: warmed })];
+    expect(concerns(records, new Date('2027-11-30T09:00:00Z'))).toEqual([]);
+    expect(concerns(records, new Date('2027-12-01T10:00:00Z'))).toMatchObject([
+      {
+        kind: 'old',
+        weight: 'weakens',
+        text: 'its real-limit of 2026-11-30 is more than a year old: run it again',
+      },
+    ]);
+  });
+
+  it.each([
+    ['stopped', 'was stopped before its end'],
+    ['cut-off', 'breaks off without an end'],
+  ] as const)('is that a record that decides was %s', (state, how) => {
+    expect(concerns([madeRecord({ findings: warmed, state })])).toMatchObject([
+      { kind: 'cut-off', weight: 'hinders', text: expect.stringContaining(how) as string },
+    ]);
+  });
+
+  it('weighs less where only what it does past its limit comes from such a record', () => {
+    const style = madeRecord({
+      on: '2026-12-01',
+      procedure: 'limit-shape',
+      findings: [word('limit-style', 'hiccup')],
+      state: 'stopped',
+    });
+    expect(concerns([madeRecord({ findings: warmed }), style])).toMatchObject([
+      { kind: 'cut-off', weight: 'weakens', run: style.run },
+    ]);
+  });
+
+  it('is a change that a later record tells of: nothing that decides may be from before it', () => {
+    const limit = madeRecord({ on: '2026-11-10', findings: warmed });
+    expect(concerns([limit, isolation('2026-11-29', 'isolated', [cut])])).toMatchObject([
+      {
+        kind: 'changed-since',
+        run: limit.run,
+        weight: 'hinders',
+        text: 'it was changed after its real-limit of 2026-11-10 (link from output to earth removed, 2026-11-14): run real-limit again',
+      },
+    ]);
+  });
+
+  it('tells a change of the same day by whether the record knew of it', () => {
+    const changes = [{ ...cut, date: '2026-11-30' }];
+    const after = isolation('2026-12-01', 'isolated', changes);
+    const before = madeRecord({ findings: warmed });
+    const knowing = madeRecord({ findings: warmed, modules: [{ name: 'K1', changes }] });
+    expect(concerns([before, after]).map(({ kind }) => kind)).toEqual(['changed-since']);
+    expect(concerns([knowing, after])).toEqual([]);
+  });
+
+  it('is not a change that was made good by measuring again', () => {
+    const modules = [{ name: 'K1', changes: [cut] }];
+    const records = [
+      madeRecord({ on: '2026-11-10', findings: warmed }),
+      isolation('2026-11-10', 'bonded'),
+      madeRecord({ on: '2026-11-29', findings: warmed, modules }),
+      isolation('2026-11-29', 'isolated', [cut]),
+    ];
+    expect(concerns(records)).toEqual([]);
+  });
+
+  it('is what it did not conform to, until it was found again', () => {
+    const limit = madeRecord({ findings: warmed });
+    expect(concerns([limit, isolation('2026-11-28', 'bonded')])).toMatchObject([
+      {
+        kind: 'not-accepted',
+        weight: 'weakens',
+        text: 'it did not conform in its isolation of 2026-11-28 (required: earth-relation is isolated): see that it is good enough for this',
+      },
+    ]);
+    const accepted = madeRecord({
+      on: '2026-11-29',
+      procedure: 'acceptance',
+      findings: [word('earth-relation', 'isolated')],
+    });
+    expect(concerns([limit, isolation('2026-11-28', 'bonded'), accepted])).toEqual([]);
+  });
+
+  it('is a limit that is known too coarsely to choose by', () => {
+    const wide = { ...amperes('usable-current', 5), interval: [4.7, 5.3] as const };
+    const findings = [...warmed.filter(({ name }) => name !== 'usable-current'), wide];
+    expect(concerns([madeRecord({ findings })])).toMatchObject([
+      {
+        kind: 'coarse',
+        text: expect.stringContaining('known to ± 300 mA only, more than 5 % of it') as string,
+      },
+    ]);
+    const narrow = { ...wide, interval: [4.8, 5.2] as const };
+    expect(concerns([madeRecord({ findings: [...findings.slice(0, -1), narrow] })])).toEqual([]);
+  });
+
+  it('is a droop that can not be told from none', () => {
+    const findings = [...limitFindings({ droop: 0.0015 }), rise];
+    expect(concerns([madeRecord({ findings })])).toMatchObject([
+      { kind: 'coarse', text: expect.stringContaining("its droop can't be told from none") as string },
+    ]);
+  });
+
+  it('is that it was measured on a simulated bench, once however many records say so', () => {
+    const simulated = { simulated: true, findings: [...warmed, word('earth-relation', 'isolated')] };
+    expect(
+      concerns([madeRecord(simulated), madeRecord({ ...simulated, procedure: 'acceptance' })]),
+    ).toMatchObject([{ kind: 'simulated', weight: 'weakens' }]);
+  });
+
+  it('is that its records describe it in different words', () => {
+    const modules = [{ name: 'K1', description: 'the brick from the shed' }];
+    expect(
+      concerns([
+        madeRecord({ findings: warmed }),
+        madeRecord({ modules, procedure: 'isolation', findings: [] }),
+      ]),
+    ).toMatchObject([
+      {
+        kind: 'described-otherwise',
+        text: expect.stringContaining(
+          '"15 V brick from a retired label printer" and "the brick from the shed"',
+        ) as string,
+      },
+    ]);
+  });
+});
