@@ -6,6 +6,7 @@ import type { WatchmanReport } from '../record/watchman-report.js';
 import { alignTable } from './align.js';
 import { answer } from './answer.js';
 import { columnsOf } from './finding-text.js';
+import { inMinutes } from './in-minutes.js';
 import { printableData } from './printable.js';
 import { endedHow, type Result } from './result.js';
 import type { Style } from './style.js';
@@ -61,10 +62,6 @@ function takenOverInWords(parts: readonly TakenOverPart[]): readonly string[] {
     const steps = first === last ? `step ${first}` : `steps ${first} to ${last}`;
     return `${steps} taken over from ${run}, ${inMinutes(began)}`;
   });
-}
-
-function inMinutes(began: string): string {
-  return began.replace('T', ' ').replace(/:\d\d(\.\d+)?Z$/, ' UTC');
 }
 
 /** Of several modules: how they are wired, and what their labels amount to together. */

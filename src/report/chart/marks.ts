@@ -1,0 +1,61 @@
+import { element, type Markup } from '../page/markup.js';
+import type { Axis } from './axis.js';
+import type { Frame } from './frame.js';
+import { cutToWidth, lineHeight, textWidth } from './text-width.js';
+
+/** A vertical line at a place worth knowing: what is recommended, where it is switched over. */
+export interface VerticalMark {
+  readonly at: number;
+  /** A few words. */
+  readonly label: string;
+}
+
+interface Flag {
+  readonly place: number;
+  readonly text: string;
+  /** Of the label, from left to right. */
+  readonly from: number;
+  readonly to: number;
+  /** Counted from the plot upwards. */
+  readonly row: number;
+}
+
+/** How high the labels of the marks stand above the plot. */
+export function roomForMarks(marks: readonly VerticalMark[], x: Axis, width: number): number {
+  return Math.max(0, ...flags(marks, x, width).map(({ row }) => row + 1)) * lineHeight;
+}
+
+/** The lines, each with its label above and to the right of it. */
+export function verticalMarks(marks: readonly VerticalMark[], { width, x, y }: Frame): readonly Markup[] {
+  return flags(marks, x, width).map(({ place, text, from, row }) => {
+    const baseline = y.end - 6 - row * lineHeight;
+    return element(
+      'g',
+      {},
+      element('line', { class: 'mark', x1: place, x2: place, y1: baseline + 3, y2: y.start }),
+      element('text', { x: from, y: baseline }, text),
+    );
+  });
+}
+
+/** From right to left, each in the lowest row in which it neither meets another label nor is crossed by a line. */
+function flags(marks: readonly VerticalMark[], x: Axis, width: number): readonly Flag[] {
+  const placed: Flag[] = [];
+  for (const { at, label } of [...marks].sort((one, other) => other.at - one.at)) {
+    const place = x.at(at);
+    const text = cutToWidth(label, width - x.start);
+    const from = Math.min(place - 1, width - textWidth(text));
+    const flag = { place, text, from, to: from + textWidth(text) };
+    const rows = [...placed.keys(), placed.length];
+    const row = rows.find((each) => placed.every((other) => !disturbs({ ...flag, row: each }, other)));
+    placed.push({ ...flag, row: row ?? placed.length });
+  }
+  return placed;
+}
+
+function disturbs(one: Flag, other: Flag): boolean {
+  const holds = (flag: Flag, place: number): boolean => flag.from - 6 < place && place < flag.to + 6;
+  if (one.row === other.row) return one.from < other.to + 10 && other.from < one.to + 10;
+  const [lower, higher] = one.row < other.row ? [one, other] : [other, one];
+  return holds(lower, higher.place);
+}

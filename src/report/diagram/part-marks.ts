@@ -1,0 +1,23 @@
+import { type Circuit, modulesOf } from '../../arrangement/build.js';
+
+/** By module: how the parts beside it are marked. */
+export interface PartMarks {
+  readonly ballast: ReadonlyMap<string, string>;
+  readonly reverse: ReadonlyMap<string, string>;
+  readonly or: ReadonlyMap<string, string>;
+}
+
+/**
+ * The marks of a circuit's parts in the order of its modules: ballasts R1, R2 …; diodes D1, D2 …, those across
+ * the outputs before those in series.
+ */
+export function partMarks({ form, ballast, reverseDiodes, orDiodes }: Circuit): PartMarks {
+  const names = modulesOf(form);
+  const numbered = (letter: string, isThere: boolean, after = 0): ReadonlyMap<string, string> =>
+    new Map(isThere ? names.map((name, index) => [name, `${letter}${after + index + 1}`]) : []);
+  return {
+    ballast: numbered('R', ballast !== undefined),
+    reverse: numbered('D', reverseDiodes),
+    or: numbered('D', orDiodes, reverseDiodes ? names.length : 0),
+  };
+}

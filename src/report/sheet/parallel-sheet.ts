@@ -1,0 +1,213 @@
+import type { Estimate } from '../../arrangement/build.js';
+import type { ModuleLost, ParallelBuild } from '../../arrangement/parallel-build.js';
+import { formatQuantity } from '../../quantity/format-quantity.js';
+import { listed } from '../../quantity/listed.js';
+import type { Dimension } from '../../quantity/quantity.js';
+import { roundedDown } from '../../quantity/rounded-down.js';
+import { brief } from '../build/brief.js';
+import { estimateCells, estimateInWords } from '../build/estimate-text.js';
+import { sentence } from '../build/prose.js';
+import { element, type Markup } from '../page/markup.js';
+import { bullets, section, type Sheet } from '../page/page.js';
+import { table } from '../page/table.js';
+import { banner } from './banner.js';
+import { circuitSection } from './circuit.js';
+import { currentsChart, sharesChart, voltageChart } from './parallel-charts.js';
+import { cautionsSection, isRefused, partsSection } from './parts.js';
+import { concernsSection, modulesSection, sourcesSection } from './records.js';
+
+/** Modules side by side. */
+export function parallelSheet(build: ParallelBuild): Sheet {
+  return {
+    kind: 'Build sheet · modules side by side',
+    title: `${namesOf(build)} in parallel`,
+    answer: banner(build, answer(build)),
+    sections: [
+      numbers(build),
+      circuitSection(build, build.circuit, build.modules),
+      partsSection(build),
+      sharing(build),
+      withoutBallast(build),
+      failures(build),
+      cautionsSection(build),
+      concernsSection(build.concerns),
+      modulesSection(build.modules),
+      sourcesSection(build.modules),
+    ],
+  };
+}
+
+function namesOf({ modules }: ParallelBuild): string {
+  return listed(modules.map(({ name }) => name));
+}
+
+function answer(build: ParallelBuild): readonly string[] {
+  const { standing, recommended, load, firstToSaturate: first } = build;
+  if (standing.kind !== 'may-be-built') return [];
+  const asked =
+    load.from === 'asked-for' && load.current > recommended.current
+      ? [`${brief(load.current, 'current')} is asked for`]
+      : [];
+  return [
+    `Together they feed up to ${roundedDown(recommended.current, 'current')} continuously`,
+    ...asked,
+    `${recommended.setBy}. ${first.module} reaches its limit first, at ${estimateInWords(first.load, 'current')}`,
+  ];
+}
+
+function numbers(build: ParallelBuild): Markup {
+  const { atLoad, load, usable, recommended, sumOfSingles, firstToSaturate: first } = build;
+  const at = `at ${brief(load.current, 'current')}`;
+  const row = (what: string, estimate: Estimate, dimension: Dimension, note = ''): string[] => [
+    what,
+    ...estimateCells(estimate, dimension),
+    note,
+  ];
+  const [imbalance, worst] = estimateCells(atLoad.imbalance, 'ratio');
+  return section(
+    'Numbers',
+    table(
+      'The group as a whole; the limits hold the value with 95 %.',
+      [
+        { heading: 'What', as: 'name' },
+        { heading: 'Value', as: 'number' },
+        { heading: '95 %', as: 'fixed' },
+        { heading: 'Note', as: 'long' },
+      ],
+      [
+        ...(isRefused(build)
+          ? []
+          : [
+              [
+                'Recommended, continuously',
+                roundedDown(recommended.current, 'current'),
+                '',
+                sentence(recommended.setBy),
+              ],
+            ]),
+        row('Usable', usable, 'current', notTheSum(sumOfSingles.usable)),
+        row(
+          `${first.module} at its limit`,
+          first.load,
+          'current',
+          `First of them with ${percent(first.probability)}. ${sentence(first.then)}`,
+        ),
+        row(`Voltage ${at}`, atLoad.busVoltage, 'voltage'),
+        [`Imbalance ${at}`, imbalance, worst, 'The upper limit takes every tolerance at its worst.'],
+        ...ballastRows(build),
+      ],
+    ),
+  );
+}
+
+/** That nobody takes the sum of labels for the group. */
+function notTheSum(sum: number): string {
+  return `One by one, added up, they would hold ${roundedDown(sum, 'current')}; the group does not.`;
+}
+
+function ballastRows({ ballast, wish }: ParallelBuild): readonly (readonly string[])[] {
+  switch (ballast.kind) {
+    case 'none':
+      return [['Ballast', 'none', '', 'Joined directly they share as wished.']];
+    case 'impossible':
+      return [['Ballast', 'none will do', '', sentence(ballast.why)]];
+    case 'resistor': {
+      const { resistance, tolerance, dissipation, dissipationAtLimit, rating, voltageCost } = ballast;
+      const chosen =
+        wish.ballast.kind === 'given'
+          ? 'As it was given'
+          : `The smallest preferred value (IEC 60063) for ${formatQuantity(wish.ballast.most, 'ratio')} imbalance`;
+      const heat = `${brief(dissipation, 'power')} of heat at most in use, ${brief(dissipationAtLimit, 'power')} with its module at its limit`;
+      return [
+        [
+          'Ballast, each',
+          `${brief(resistance, 'resistance')} ± ${brief(tolerance, 'ratio')}`,
+          '',
+          `${chosen}.`,
+        ],
+        ['Ballast to buy', rating === undefined ? 'none will do' : brief(rating, 'power'), '', `${heat}.`],
+        ['Voltage it costs', brief(voltageCost, 'voltage'), '', 'Across each ballast at full load.'],
+      ];
+    }
+  }
+}
+
+function sharing(build: ParallelBuild): Markup {
+  const { modules, atLoad, load } = build;
+  const from = load.from === 'asked-for' ? 'the load asked for' : 'the recommended load';
+  const columns = [
+    { heading: 'Module', as: 'name' },
+    { heading: 'Current', as: 'number' },
+    { heading: '95 %', as: 'fixed' },
+    { heading: 'Share', as: 'number' },
+    { heading: '95 %', as: 'fixed' },
+  ] as const;
+  return section(
+    'How they share the load',
+    table(
+      `At ${brief(load.current, 'current')}, ${from}.`,
+      columns,
+      modules.map(({ name }, index) => [
+        name,
+        ...cellsOf(atLoad.currents[index], 'current'),
+        ...cellsOf(atLoad.shares[index], 'ratio'),
+      ]),
+    ),
+    sharesChart(build),
+    currentsChart(build),
+    voltageChart(build),
+  );
+}
+
+function cellsOf(estimate: Estimate | undefined, dimension: Dimension): readonly string[] {
+  return estimate === undefined ? ['', ''] : estimateCells(estimate, dimension);
+}
+
+function withoutBallast({ ballast, withoutBallast: without, load }: ParallelBuild): Markup | undefined {
+  if (ballast.kind === 'none') return undefined;
+  const hog = without.hog === undefined ? '' : `; ${without.hog} carries most`;
+  return section(
+    'Without ballast',
+    bullets([
+      `At ${brief(load.current, 'current')} the imbalance would be ${estimateInWords(without.imbalance, 'ratio')}${hog}.`,
+      `The group would fail as a whole at ${brief(without.failsAt, 'current')}.`,
+      ...without.story.map(sentence),
+    ]),
+  );
+}
+
+const rests: Readonly<Record<ModuleLost['rest'], { readonly words: string; readonly look: string }>> = {
+  'carries-it': { words: 'carry the load', look: 'good' },
+  overloaded: { words: 'are overloaded', look: 'unsure' },
+  fails: { words: 'fail', look: 'bad' },
+};
+
+function failures({ failures: each, load }: ParallelBuild): Markup | undefined {
+  if (each.length === 0) return undefined;
+  return section(
+    'When one fails or is switched off',
+    table(
+      `What the others can do then; the load is ${brief(load.current, 'current')}.`,
+      [
+        { heading: 'Without', as: 'name' },
+        { heading: 'The others' },
+        { heading: 'Continuously', as: 'number' },
+        { heading: 'At most', as: 'number' },
+      ],
+      each.map(({ module, rest, recommended, usable }) => [
+        module,
+        element('span', { class: `state ${rests[rest].look}` }, rests[rest].words),
+        roundedDown(recommended, 'current'),
+        roundedDown(usable, 'current'),
+      ]),
+    ),
+    each.map(({ module, sentences }) =>
+      sentences.length === 0 ? undefined : [element('h3', {}, module), bullets(sentences.map(sentence))],
+    ),
+  );
+}
+
+/** Never all and never nothing: nothing measured is that sure. */
+function percent(probability: number): string {
+  return `${Math.min(99, Math.max(1, Math.round(100 * probability)))} %`;
+}

@@ -1,0 +1,40 @@
+import type { Guaranteed, GuaranteedPoint } from '../../arrangement/staged-build.js';
+import type { Amperes, Volts } from '../../quantity/quantity.js';
+
+/** A stretch of the output over which one arrangement feeds it and one thing sets the current. */
+export interface Stretch {
+  readonly from: Volts;
+  readonly to: Volts;
+  readonly least: Amperes;
+  readonly most: Amperes;
+  readonly of: Guaranteed;
+}
+
+export function stretchesOf(
+  points: readonly GuaranteedPoint[],
+  way: (point: GuaranteedPoint) => Guaranteed,
+): readonly Stretch[] {
+  return points.reduce<Stretch[]>((stretches, point) => {
+    const of = way(point);
+    const open = stretches.at(-1);
+    if (open?.of.arrangement === of.arrangement && open.of.setBy === of.setBy) {
+      stretches[stretches.length - 1] = {
+        ...open,
+        to: point.output,
+        least: Math.min(open.least, of.current),
+        most: Math.max(open.most, of.current),
+      };
+    } else {
+      stretches.push({ from: point.output, to: point.output, least: of.current, most: of.current, of });
+    }
+    return stretches;
+  }, []);
+}
+
+export const limits: Readonly<Record<Guaranteed['setBy'], string>> = {
+  module: 'the modules',
+  ballast: 'the ballast',
+  dissipation: 'the heat of the linear stage',
+  'drop-out': 'the drop-out of the linear stage',
+  'linear-stage': "the linear stage's own current limit",
+};
