@@ -37,10 +37,10 @@ function whyOf(diodes: readonly ReverseDiode[]): string {
   const most = Math.max(...diodes.map(({ current }) => current));
   const voltage = Math.max(...diodes.map((diode) => diode.voltage));
   const heat = Math.max(...diodes.map((diode) => diode.heat));
-  const atLeast = diodes.some(({ bound }) => bound === 'least')
-    ? ' at least, as not all records show how much more it may be'
-    : '';
-  return `when a module fails, the others push up to ${amps(most)}${atLeast} through its diode; without it the failed output is driven backwards by up to ${volts(voltage)}. That makes up to ${formatExact(heat, 'power').value} W of heat until the load is off: give it a heat sink, or a thermal switch that takes the load off`;
+  const pushed = diodes.some(({ bound }) => bound === 'least')
+    ? `${amps(most)} or more (not all records show how much more)`
+    : `up to ${amps(most)}`;
+  return `when a module fails, the others push ${pushed} through its diode; without it the failed output is driven backwards by up to ${volts(voltage)}. That makes up to ${formatExact(heat, 'power').value} W of heat until the load is off: give it a heat sink, or a thermal switch that takes the load off`;
 }
 
 function volts(voltage: Volts): string {
