@@ -48,7 +48,7 @@ describe('the smallest ballast', () => {
     const module = fc
       .tuple(number(15, 15.1), number(0, 0.05), number(0, 0.01))
       .map(([voltage, droop, expanded]) => brick(voltage, droop, { voltage: expanded, droop: 0.001 }));
-    const wanted: fc.Arbitrary<BallastWanted> = fc.record({
+    const wanted: fc.Arbitrary<BallastWanted & { readonly load: number }> = fc.record({
       modules: fc.array(module, { minLength: 2, maxLength: 4 }),
       load: number(2, 16),
       imbalance: number(0.05, 0.9),

@@ -1,0 +1,86 @@
+import { amps, volts } from '../analysis/in-words.js';
+import { listed } from '../quantity/listed.js';
+import { formatExact } from '../quantity/format-quantity.js';
+import type { Amperes, Ratio } from '../quantity/quantity.js';
+import { roundedDown } from '../quantity/rounded-down.js';
+import type { Concern, Standing } from './build.js';
+import type { ModuleProfile } from './module-profile.js';
+import type { ParallelBuild, ParallelWish } from './parallel-build.js';
+import { standingOf } from './standing-of.js';
+
+/** Of the label's voltage: labels that differ by more are of different modules. */
+const alikeLabels: Ratio = 0.01;
+/** The most that ballasts may cost of the lowest open-circuit voltage, as where one is chosen. */
+const mostCost: Ratio = 0.1;
+
+interface Found {
+  readonly ballast: ParallelBuild['ballast'];
+  /** Of the group. */
+  readonly recommended: Amperes;
+}
+
+/**
+ * Whether a group may be built. Refused: modules made for different voltages; one that its records recommend for
+ * nothing; an imbalance that no ballast gives; a ballast that takes more than a tenth of the voltage; a load above
+ * what is recommended. An output that is bonded to earth or leaks to it refuses nothing: all 0 V are joined
+ * anyway. The cautions say what it means.
+ */
+export function parallelStanding(
+  profiles: readonly ModuleProfile[],
+  wish: ParallelWish,
+  found: Found,
+): { readonly standing: Standing; readonly concerns: readonly Concern[] } {
+  const concerns = profiles.flatMap((profile) => profile.concerns);
+  const refusals = [
+    ...differentLabels(profiles),
+    ...profiles.flatMap(recommendedForNothing),
+    ...ballastRefusals(profiles, found),
+    ...tooMuch(profiles, wish, found),
+  ];
+  return { standing: standingOf({ refusals, doubts: [], concerns }), concerns };
+}
+
+function differentLabels(profiles: readonly ModuleProfile[]): readonly string[] {
+  const voltages = profiles.map(({ label }) => label.voltage);
+  const highest = Math.max(...voltages);
+  const lowest = Math.min(...voltages);
+  if (highest <= lowest * (1 + alikeLabels)) return [];
+  const of = (voltage: number): string =>
+    listed(profiles.filter(({ label }) => label.voltage === voltage).map(({ name }) => name));
+  const written = (voltage: number): string => {
+    const text = formatExact(voltage, 'voltage');
+    return `${text.value} ${text.unit}`;
+  };
+  return [
+    `${of(highest)} is made for ${written(highest)} and ${of(lowest)} for ${written(lowest)}: side by side the higher carries everything, the lower nothing, and its output is held above what it is made for. Put only modules of one voltage side by side.`,
+  ];
+}
+
+function recommendedForNothing({ name, recommended }: ModuleProfile): readonly string[] {
+  return recommended.current > 0
+    ? []
+    : [`${name} is recommended for nothing by its records: ${recommended.why}.`];
+}
+
+function ballastRefusals(profiles: readonly ModuleProfile[], { ballast }: Found): readonly string[] {
+  if (ballast.kind === 'impossible') return [`No ballast does what is asked for: ${ballast.why}.`];
+  if (ballast.kind === 'none') return [];
+  const lowest = Math.min(...profiles.map(({ openCircuit }) => openCircuit.value));
+  return ballast.voltageCost > mostCost * lowest
+    ? [
+        `The ballasts take ${volts(ballast.voltageCost)} of ${volts(lowest)}, more than a tenth: take smaller ones, or leave the ballast out to have one chosen.`,
+      ]
+    : [];
+}
+
+function tooMuch(
+  profiles: readonly ModuleProfile[],
+  { load }: ParallelWish,
+  { recommended }: Found,
+): readonly string[] {
+  if (load === undefined || load <= recommended || recommended <= 0) return [];
+  const modules = Math.ceil((load * profiles.length) / recommended);
+  return [
+    `${amps(load)} is asked for, and ${roundedDown(recommended, 'current')} is the most that the group is recommended for. Ask for less, or put more modules side by side: of modules like these about ${modules} would do, if they share as well.`,
+  ];
+}
