@@ -1,16 +1,18 @@
 import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
 import { type AnyFile, readAnyFile } from '../files/read-any-file.js';
+import { readStages } from '../files/read-stages.js';
 import type { FileRead } from '../files/read-text.js';
 import { printable } from '../quantity/printable.js';
 import { checkDialogueOf } from './check-dialogue.js';
 import { errorText } from './error-text.js';
+import { recordsOf } from './stage-records.js';
 import type { Streams } from './streams.js';
 import { readBenchDrivers, vocabulary } from './wiring.js';
 
 /**
  * `railproof check`: looks at each file and says what is wrong with it, or that it is right. A bench is
- * checked together with its drivers, and a driver together with its dialogue. The exit status is that of the
- * first bad one.
+ * checked together with its drivers, a driver together with its dialogue, a stages file together with the
+ * records that it names. The exit status is that of the first bad one.
  */
 export async function check(files: readonly string[], streams: Streams): Promise<ExitCode> {
   let status: ExitCode = exitCodes.conforms;
@@ -34,6 +36,10 @@ async function checkTogether(file: FileRead<AnyFile>): Promise<string> {
   if (kind === 'driver') {
     const exchanges = checkDialogueOf({ ...file, value: content });
     return exchanges === 0 ? '' : `; ${counted(exchanges)} of its dialogue too`;
+  }
+  if (kind === 'stages') {
+    const records = recordsOf((await readStages(file.path)).value.modules);
+    return `; the ${records.length} records of its modules are there too`;
   }
   if (kind === 'bench') {
     const drivers = await readBenchDrivers({ ...file, value: content });

@@ -1,5 +1,6 @@
 import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import type { Outcome } from '../judgement/judge.js';
+import type { BuildOutcome } from '../report/build/any-build.js';
 
 /** The exit status that a decision stands for. */
 export function statusOfOutcome(outcome: Outcome | 'not-judged'): ExitCode {
@@ -10,6 +11,19 @@ export function statusOfOutcome(outcome: Outcome | 'not-judged'): ExitCode {
     case 'does-not-conform':
       return exitCodes.doesNotConform;
     case 'undecided':
+      return exitCodes.undecided;
+  }
+}
+
+/** The exit status that a build stands for. */
+export function statusOfBuild(outcome: BuildOutcome): ExitCode {
+  switch (outcome) {
+    case 'may-be-built':
+      return exitCodes.conforms;
+    case 'must-not-be-built':
+    case 'too-little':
+      return exitCodes.doesNotConform;
+    case 'cannot-tell':
       return exitCodes.undecided;
   }
 }

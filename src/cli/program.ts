@@ -1,10 +1,13 @@
 import { Command, CommanderError, Option } from 'commander';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { printableLines } from '../quantity/printable.js';
+import type { ShownAs } from './build-shown.js';
+import type { CombineOptions } from './combine.js';
 import type { DriversOptions } from './drivers.js';
 import { errorText } from './error-text.js';
 import { packageFacts } from './package-facts.js';
 import type { RunOptions } from './run-wanted.js';
+import type { SelectOptions } from './select.js';
 import type { Streams } from './streams.js';
 
 /**
@@ -43,6 +46,17 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
   const command = (usage: string, description: string, example: string): Command =>
     program.command(usage).description(description).addHelpText('after', `\nExample:\n  ${example}\n`);
   const json = (): Option => new Option('--json', 'print one JSON object instead of text');
+  const ballast = (): Option =>
+    new Option('--ballast <resistance>', 'in series with each module, "51 mΩ" (or "51 mohm")');
+  const imbalance = (): Option =>
+    new Option(
+      '--imbalance <share>',
+      'have the ballast chosen: the most that shares may differ; "10 %" when left out',
+    );
+  const tolerance = (): Option =>
+    new Option('--resistor-tolerance <share>', 'of the ballasts; "5 %" when left out');
+  const sheet = (): Option =>
+    new Option('--sheet <file>', 'keep a build sheet, a page with circuit, parts and charts: sheet.html');
 
   command(
     'run [procedure]',
@@ -96,6 +110,54 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     .action(async (earlier: string, later: string, options: { tolerance: string; json?: boolean }) => {
       const { compareRecords } = await import('./compare.js');
       done(await compareRecords({ earlier, later, ...options }, streams));
+    });
+
+  command(
+    'combine <run...>',
+    'what modules come to side by side or one upon the other, from their records, and whether that may be built',
+    'railproof combine --parallel fixtures/runs/20261130T091500Z-K1-real-limit fixtures/runs/20261202T034336Z-K2-real-limit',
+  )
+    .option('--parallel', 'side by side, a ballast in series with each')
+    .option('--series', 'one upon the other, the lowest first')
+    .option('--load <current>', 'what they are to feed, "6 A"; what is recommended, when left out')
+    .addOption(ballast())
+    .addOption(imbalance())
+    .addOption(tolerance())
+    .addOption(sheet())
+    .addOption(json())
+    .action(async (runs: string[], options: CombineOptions) => {
+      const { combine } = await import('./combine.js');
+      done(await combine(runs, options, streams));
+    });
+
+  command(
+    'stages <file>',
+    'a supply whose modules are joined otherwise as its output rises: what it feeds, and whether its switching is safe',
+    'railproof stages fixtures/stages/valve-bench.yaml',
+  )
+    .addOption(sheet())
+    .addOption(json())
+    .action(async (file: string, options: ShownAs) => {
+      const { stages } = await import('./stages.js');
+      done(await stages(file, options, streams));
+    });
+
+  command(
+    'select <folder...>',
+    'which modules of a drawer of records go together best, and by how much',
+    'railproof select fixtures/runs --group 2 --supplies 2',
+  )
+    .option('--group <number>', 'modules side by side in each place')
+    .option('--stack <number>', 'places one upon the other')
+    .option('--supplies <number>', 'alike supplies out of the one drawer; 1 when left out')
+    .addOption(ballast())
+    .addOption(imbalance())
+    .addOption(tolerance())
+    .addOption(sheet())
+    .addOption(json())
+    .action(async (folders: string[], options: SelectOptions) => {
+      const { select } = await import('./select.js');
+      done(await select(folders, options, streams));
     });
 
   command(
@@ -185,7 +247,8 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
 }
 
 const exitStatusHelp = `
-Exit status: 0 conforms, or nothing to judge; 1 does not conform, or changed; 2 undecided; 3 stopped by a guard or by
-the operator; 64 usage; 65 bad file; 66 missing file; 69 instrument unreachable or lost, or the load not confirmed to
-be off; 70 a fault of ours; 74 the record or the output could not be written.
+Exit status: 0 conforms, or nothing to judge, or may be built; 1 does not conform, or changed, or must not be built, or
+is recommended for less than the load asked for; 2 undecided, or nobody can tell; 3 stopped by a guard or by the
+operator; 64 usage; 65 bad file; 66 missing file; 69 instrument unreachable or lost, or the load not confirmed to be
+off; 70 a fault of ours; 74 the record or the output could not be written.
 `;

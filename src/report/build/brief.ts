@@ -1,5 +1,6 @@
 import { formatExact } from '../../quantity/format-quantity.js';
-import type { Dimension } from '../../quantity/quantity.js';
+import type { Amperes, Dimension } from '../../quantity/quantity.js';
+import { roundedDown } from '../../quantity/rounded-down.js';
 
 /** A number worked out, for sentences and tables that say nothing of its uncertainty: three digits, none idle. */
 export function brief(value: number, dimension: Dimension): string {
@@ -10,4 +11,14 @@ export function brief(value: number, dimension: Dimension): string {
 /** The same where the unit is said elsewhere. */
 export function briefDigits(value: number): string {
   return String(Number(value.toPrecision(3)));
+}
+
+/** A load that was asked for as it was asked for; the recommended one never rounded up. */
+export function loadInWords(load: {
+  readonly current: Amperes;
+  readonly from: 'asked-for' | 'recommended';
+}): string {
+  if (load.from === 'recommended') return roundedDown(load.current, 'current');
+  const { value, unit } = formatExact(load.current, 'current');
+  return `${value} ${unit}`;
 }

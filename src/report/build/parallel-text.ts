@@ -1,11 +1,12 @@
 import type { ParallelBuild } from '../../arrangement/parallel-build.js';
-import { formatExact, formatQuantity } from '../../quantity/format-quantity.js';
+import { formatQuantity } from '../../quantity/format-quantity.js';
 import type { Dimension } from '../../quantity/quantity.js';
 import { listed } from '../../quantity/listed.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { alignTable } from '../align.js';
 import { printableData } from '../printable.js';
 import type { Style } from '../style.js';
+import { loadInWords } from './brief.js';
 import { ballastText } from './ballast-text.js';
 import { estimateCells, estimateInWords } from './estimate-text.js';
 import { headingText } from './heading-text.js';
@@ -28,7 +29,7 @@ export function parallelAsText(worked: ParallelBuild, style: Style): string {
     failuresText(build, style),
     partsText(build, style),
     cautionsText(build, style),
-    concernsText(build.concerns, style),
+    concernsText(build, style),
     sourcesText(build.modules, style),
   ]);
 }
@@ -49,7 +50,7 @@ function what(build: ParallelBuild): string {
 }
 
 function tooLittle(build: ParallelBuild): string {
-  return `${what(build)}, and ${amperes(build.load.current)} is asked for`;
+  return `${what(build)}, and ${loadInWords(build.load)} is asked for`;
 }
 
 function sideBySide(build: ParallelBuild): string {
@@ -60,7 +61,7 @@ function sideBySide(build: ParallelBuild): string {
 }
 
 function setBy({ recommended }: ParallelBuild): string {
-  return `What sets it: ${recommended.setBy}`;
+  return `No more because of ${recommended.setBy}`;
 }
 
 /** Who meets the limit first, and what comes of it. */
@@ -77,7 +78,7 @@ function notTheSum({ sumOfSingles, recommended, modules }: ParallelBuild): strin
 
 function groupText(build: ParallelBuild, style: Style): string {
   const { atLoad, load, usable, firstToSaturate, standing } = build;
-  const at = `at ${amperes(load.current)}`;
+  const at = `at ${loadInWords(load)}`;
   const may = standing.kind === 'may-be-built' ? 'recommended' : 'by these numbers alone';
   const [imbalance, worst] = estimateCells(atLoad.imbalance, 'ratio');
   const row = (name: string, estimate: typeof usable, dimension: Dimension): string[] => [
@@ -105,8 +106,8 @@ function withoutBallastText(build: ParallelBuild, style: Style): string {
   const imbalance = estimateInWords(withoutBallast.imbalance, 'ratio');
   const hog = withoutBallast.hog === undefined ? '' : `; ${withoutBallast.hog} carries most`;
   const lines = [
-    `At ${amperes(load.current)} the imbalance would be ${imbalance}${hog}`,
-    `As a whole it would fail at ${amperes(withoutBallast.failsAt)}`,
+    `At ${loadInWords(load)} the imbalance would be ${imbalance}${hog}`,
+    `As a whole it would fail at ${roundedDown(withoutBallast.failsAt, 'current')}`,
     ...withoutBallast.story,
   ];
   return section('Without ballast', bullets(lines), style);
@@ -125,12 +126,7 @@ function failuresText(build: ParallelBuild, style: Style): string {
     ),
     ...bullets(sentences),
   ]);
-  return section('When one fails or is switched off', lines, style, `at ${amperes(build.load.current)}`);
-}
-
-function amperes(value: number): string {
-  const { value: number, unit } = formatExact(value, 'current');
-  return `${number} ${unit}`;
+  return section('When one fails or is switched off', lines, style, `at ${loadInWords(build.load)}`);
 }
 
 /** Never all and never nothing: nothing measured is that sure. */

@@ -2,65 +2,87 @@ import type { Concern } from '../../arrangement/build.js';
 import type { ModuleProfile, Taken } from '../../arrangement/module-profile.js';
 import type { RecordSource } from '../../arrangement/understood-record.js';
 import { formatInterval } from '../../quantity/format-quantity.js';
+import { listed } from '../../quantity/listed.js';
 import type { Dimension } from '../../quantity/quantity.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { alignTable } from '../align.js';
+import { inMinutes } from '../in-minutes.js';
 import type { Style } from '../style.js';
+import type { AnyBuild } from './any-build.js';
 import { prose, section, sentence } from './prose.js';
 
-/** What must be known of the records before anything is built on them; what nothing can be decided on first. */
-export function concernsText(concerns: readonly Concern[], style: Style): string {
-  const rank = { hinders: 0, weakens: 1 } as const;
-  const lines = [...concerns]
-    .sort((one, other) => rank[one.weight] - rank[other.weight])
-    .map((concern) => {
-      const line = prose(sentence(concernInWords(concern)), '- ');
-      return concern.weight === 'hinders' ? style.warn(line) : line;
-    });
+/**
+ * What must be known of the records before anything is built on them; what nothing can be decided on first. What
+ * the answer has said already is not said twice, and what holds for several modules once.
+ */
+export function concernsText({ concerns, standing }: AnyBuild, style: Style): string {
+  const said = standing.kind === 'may-be-built' ? [] : standing.because;
+  const alike = new Map<string, Concern[]>();
+  for (const concern of concerns) {
+    if (said.some((because) => because.includes(concern.text))) continue;
+    const key = `${concern.weight} ${concern.text}`;
+    alike.set(key, [...(alike.get(key) ?? []), concern]);
+  }
+  const hinders = (group: readonly Concern[]): boolean => group[0]?.weight === 'hinders';
+  const groups = [...alike.values()];
+  const lines = [...groups.filter(hinders), ...groups.filter((group) => !hinders(group))].map((group) => {
+    const line = prose(sentence(concernInWords(group)), '- ');
+    return hinders(group) ? style.warn(line) : line;
+  });
   return section('About the records', lines, style);
 }
 
-function concernInWords({ module, text, run }: Concern): string {
-  const said = text.startsWith(module) ? text : `${module}: ${text}`;
-  return run === undefined || text.includes(run) ? said : `${said} (${run})`;
+function concernInWords(group: readonly Concern[]): string {
+  const [first] = group;
+  if (first === undefined) return '';
+  const names = [...new Set(group.map(({ module }) => module))];
+  const who = names.length === 1 ? names.join('') : `Each of ${listed(names)}`;
+  return first.text.startsWith(first.module) && names.length === 1 ? first.text : `${who}: ${first.text}`;
 }
 
 /** Every number that was taken over, and the record that it was taken from. */
 export function sourcesText(modules: readonly ModuleProfile[], style: Style): string {
-  return section('Where the numbers come from', modules.flatMap(ofModule), style, 'value ± 95 %');
+  return section(
+    'Where the numbers come from',
+    modules.flatMap(ofModule),
+    style,
+    'value and its 95 % limits',
+  );
 }
 
 /** A number or a word of a module, as a row shows it. */
 interface Row {
   readonly from: RecordSource;
-  readonly cells: readonly string[];
+  readonly cells: readonly [name: string, value: string, range: string];
+  readonly note?: string;
 }
 
 function ofModule(module: ModuleProfile): string[] {
   const rows = rowsOf(module);
-  const widths = alignTable(
+  const lines = alignTable(
     rows.map(({ cells }) => cells),
     ['left', 'left', 'left'],
-  );
-  const runs = [...new Set(rows.map(({ from }) => from.run))];
-  return runs.flatMap((run) => {
-    const from = rows.find((row) => row.from.run === run)?.from;
-    const lines = widths.filter((_, index) => rows[index]?.from.run === run);
-    return [
-      `${module.name}, ${run}${from === undefined ? '' : how(from)}`,
-      ...lines.map((line) => `  ${line}`),
-    ];
-  });
+  ).map((line, index) => withNote(line, rows[index]?.note));
+  const runs = new Map(rows.map(({ from }) => [from.run, from]));
+  return [...runs.values()].flatMap((from) => [
+    prose(sourceInWords(from), `${module.name}: `),
+    ...lines.filter((_, index) => rows[index]?.from.run === from.run).map((line) => `  ${line}`),
+  ]);
 }
 
-/** Only what the name of the record does not tell. */
-function how({ state, simulated }: RecordSource): string {
-  const words = [
+function withNote(line: string, note = ''): string {
+  return note === '' ? line : `${line}  ${note}`;
+}
+
+function sourceInWords({ run, procedure, began, state, simulated }: RecordSource): string {
+  return [
+    run,
+    ...(run.endsWith(procedure) ? [] : [procedure]),
+    inMinutes(began),
     ...(simulated ? ['simulated'] : []),
     ...(state === 'stopped' ? ['STOPPED'] : []),
     ...(state === 'cut-off' ? ['CUT OFF'] : []),
-  ];
-  return words.length === 0 ? '' : ` (${words.join(', ')})`;
+  ].join(', ');
 }
 
 function rowsOf(module: ModuleProfile): readonly Row[] {
@@ -68,7 +90,7 @@ function rowsOf(module: ModuleProfile): readonly Row[] {
   return [
     ...number('no load', module.openCircuit, 'voltage'),
     ...number('droop', module.droop, 'resistance'),
-    ...number('usable', module.usable, 'current'),
+    ...number('usable', module.usable, 'current').map((row) => ({ ...row, note: module.usable.note })),
     {
       from: recommended.from,
       cells: ['recommended', roundedDown(recommended.current, 'current'), recommended.why],
@@ -76,17 +98,17 @@ function rowsOf(module: ModuleProfile): readonly Row[] {
     ...number('drops out', module.dropout, 'current'),
     ...number('into a short', module.shortCircuit, 'current'),
     ...word('past its limit', limitStyle?.word, limitStyle?.from),
-    ...word('output to earth', earth?.relation, earth?.from),
+    ...word('to earth', earth?.relation, earth?.from),
   ];
 }
 
 function number(name: string, taken: Taken | undefined, dimension: Dimension): readonly Row[] {
   if (taken === undefined) return [];
-  const [low, high] = taken.interval;
-  const said = formatInterval(taken.value, low, high, dimension);
-  const least = taken.bound === 'least' ? '≥ ' : '';
-  const range = said.low === '' || said.high === '' ? '' : `, ${said.low} to ${said.high}`;
-  return [{ from: taken.from, cells: [name, `${least}${said.value}${range} ${said.unit}`, taken.note] }];
+  const { value, interval, bound, from } = taken;
+  const { low, high, ...said } = formatInterval(value, interval[0], interval[1], dimension);
+  const least = bound === 'least' ? '≥ ' : '';
+  const range = low === '' || high === '' ? '' : `${low} to ${high}`;
+  return [{ from, cells: [name, `${least}${said.value} ${said.unit}`, range] }];
 }
 
 function word(name: string, said: string | undefined, from: RecordSource | undefined): readonly Row[] {

@@ -24,7 +24,7 @@ export function selectionAsText(worked: Selection, style: Style): string {
     restText(selection, style),
     partsText(selection, style),
     cautionsText(selection, style),
-    concernsText(selection.concerns, style),
+    concernsText(selection, style),
     sourcesText(selection.modules, style),
   ]);
 }

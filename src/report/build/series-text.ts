@@ -5,7 +5,7 @@ import { roundedDown } from '../../quantity/rounded-down.js';
 import { alignTable } from '../align.js';
 import { printableData } from '../printable.js';
 import type { Style } from '../style.js';
-import { brief, briefDigits } from './brief.js';
+import { brief, briefDigits, loadInWords } from './brief.js';
 import { between, estimateCells, estimateInWords, valueAt } from './estimate-text.js';
 import { headingText } from './heading-text.js';
 import { cautionsText, partsText } from './parts-text.js';
@@ -24,8 +24,12 @@ export function seriesAsText(worked: SeriesBuild, style: Style): string {
     diodesText(build, style),
     bondsText(build, style),
     partsText(build, style),
-    cautionsText(build, style),
-    concernsText(build.concerns, style),
+    cautionsText(
+      build,
+      style,
+      build.bonds.map((bond) => bond.sentence),
+    ),
+    concernsText(build, style),
     sourcesText(build.modules, style),
   ]);
 }
@@ -37,22 +41,22 @@ function namesOf({ modules }: SeriesBuild): string {
 function answer(build: SeriesBuild, style: Style): string {
   const { recommended, load, voltageAtLoad, standing } = build;
   const feeds = `${namesOf(build)} in a stack feed up to ${roundedDown(recommended.current, 'current')} continuously`;
-  const at = `at ${brief(load.current, 'current')} they give ${estimateInWords(voltageAtLoad, 'voltage')}`;
+  const at = `at ${loadInWords(load)} they give ${estimateInWords(voltageAtLoad, 'voltage')}`;
   const first = standingText(
     build,
-    { what: `${feeds}; ${at}`, tooLittle: `${feeds}, and ${brief(load.current, 'current')} is asked for` },
+    { what: `${feeds}; ${at}`, tooLittle: `${feeds}, and ${loadInWords(load)} is asked for` },
     style,
   );
   const more =
     standing.kind === 'may-be-built'
-      ? [`What sets it: ${recommended.setBy}`, weakest(build), touch(build)]
+      ? [`No more because of ${recommended.setBy}`, weakest(build), touch(build)]
       : [];
   return [first, ...more.map((each) => prose(sentence(each)))].join('\n');
 }
 
 function weakest({ weakest: { module, sure, then } }: SeriesBuild): string {
   const first = sure ? `${module} is the weakest` : `${module} is most likely the weakest`;
-  return `${first}. When more is asked: ${then}`;
+  return `${first}. ${then}`;
 }
 
 function touch({ beyondTouchable, openVoltage }: SeriesBuild): string {
@@ -67,7 +71,7 @@ function stringText(build: SeriesBuild, style: Style): string {
   const may = standing.kind === 'may-be-built' ? 'recommended' : 'by these numbers alone';
   const rows = [
     ['no load', ...estimateCells(openVoltage, 'voltage')],
-    [`at ${brief(load.current, 'current')}`, ...estimateCells(voltageAtLoad, 'voltage')],
+    [`at ${loadInWords(load)}`, ...estimateCells(voltageAtLoad, 'voltage')],
     ['usable', ...estimateCells(usable, 'current')],
     [may, roundedDown(recommended.current, 'current'), 'continuously'],
   ];
@@ -112,8 +116,8 @@ function railsText({ rails }: SeriesBuild, style: Style): string {
   const head = ['', '0 V stands at', 'its plus at', 'output bears', ''];
   const rows = rails.map(({ module, float, top, isolation, verdict }) => [
     module,
-    estimateCells(float, 'voltage')[0],
-    estimateCells(top, 'voltage')[0],
+    brief(float.value, 'voltage'),
+    brief(top.value, 'voltage'),
     isolation === 'unknown' ? 'unknown' : brief(isolation, 'voltage'),
     verdicts[verdict],
   ]);
@@ -126,9 +130,10 @@ function railsText({ rails }: SeriesBuild, style: Style): string {
 }
 
 function diodesText({ diodes }: SeriesBuild, style: Style): string {
-  const head = ['across', 'buy at least', 'must carry', 'must block', 'heat'];
-  const rows = diodes.map((diode) => [
-    diode.module,
+  const head = ['', '', 'buy at least', 'must carry', 'must block', 'heat'];
+  const rows = diodes.map((diode, index) => [
+    `D${index + 1}`,
+    `across ${diode.module}`,
     `${brief(diode.rating.current, 'current')}, ${brief(diode.rating.voltage, 'voltage')}`,
     pushed(diode),
     brief(diode.voltage, 'voltage'),
@@ -136,7 +141,7 @@ function diodesText({ diodes }: SeriesBuild, style: Style): string {
   ]);
   return section(
     'Reverse diodes',
-    rows.length === 0 ? [] : alignTable([head, ...rows], ['left', 'left', 'left', 'left', 'left']),
+    rows.length === 0 ? [] : alignTable([head, ...rows], ['left', 'left', 'left', 'right', 'right', 'right']),
     style,
     'one across each output, against the day on which it fails',
   );

@@ -3,7 +3,7 @@ import type { ParallelBuild } from '../../arrangement/parallel-build.js';
 import type { Amperes } from '../../quantity/quantity.js';
 import { alignTable } from '../align.js';
 import type { Style } from '../style.js';
-import { briefDigits } from './brief.js';
+import { briefDigits, loadInWords } from './brief.js';
 import { between, estimateCells, valueAt } from './estimate-text.js';
 import { section } from './prose.js';
 
@@ -23,7 +23,7 @@ function atLoad({ modules, atLoad, load }: ParallelBuild, style: Style): string 
   });
   const what = load.from === 'asked-for' ? 'the load asked for' : 'what is recommended';
   return section(
-    `Shares at ${briefDigits(load.current)} A`,
+    `Shares at ${loadInWords(load)}`,
     alignTable(rows, ['left', 'right', 'left', 'right', 'left']),
     style,
     `${what}; 95 %`,

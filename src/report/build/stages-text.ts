@@ -26,7 +26,7 @@ export function stagesAsText(worked: StagedBuild, style: Style): string {
     dissipationText(build, style),
     partsText(build, style),
     cautionsText(build, style),
-    concernsText(build.concerns, style),
+    concernsText(build, style),
     sourcesText(build.modules, style),
   ]);
 }

@@ -1,0 +1,47 @@
+import { realClock } from '../clock/real-clock.js';
+import type { ExitCode } from '../errors/railproof-error.js';
+import { printable } from '../quantity/printable.js';
+import { type AnyBuild, outcomeOf } from '../report/build/any-build.js';
+import { buildAsJson } from '../report/build/build-json.js';
+import { buildAsText } from '../report/build/build-text.js';
+import { jsonText } from '../report/json-text.js';
+import { styleFor } from '../report/style.js';
+import { statusOfBuild } from './exit-status.js';
+import { packageFacts } from './package-facts.js';
+import type { Streams } from './streams.js';
+
+/** How the answer of `combine`, `stages` and `select` is wanted. */
+export interface ShownAs {
+  /** Where the build sheet goes. */
+  readonly sheet?: string;
+  readonly json?: boolean;
+}
+
+/** Looks where the sheet is to go. @throws SheetNotKeptError */
+export async function checkShown({ sheet }: ShownAs): Promise<void> {
+  if (sheet === undefined) return;
+  const { checkSheet } = await import('./sheet-written.js');
+  checkSheet(sheet);
+}
+
+/** Says what was worked out, and keeps its sheet; the exit status says whether it may be built. */
+export async function showBuild(build: AnyBuild, wanted: ShownAs, streams: Streams): Promise<ExitCode> {
+  streams.stdout.write(
+    wanted.json === true
+      ? jsonText(buildAsJson(build))
+      : buildAsText(build, styleFor(streams.stdout, streams.environment)),
+  );
+  if (wanted.sheet !== undefined) {
+    const [{ buildPage }, { writeSheet }] = await Promise.all([
+      import('../report/page/build-page.js'),
+      import('./sheet-written.js'),
+    ]);
+    const { name, version } = packageFacts();
+    await writeSheet(
+      wanted.sheet,
+      buildPage(build, { program: `${name} ${version}`, date: realClock.wall() }),
+    );
+    streams.stderr.write(`Build sheet: ${printable(wanted.sheet)}\n`);
+  }
+  return statusOfBuild(outcomeOf(build));
+}
