@@ -21,8 +21,11 @@ export interface BallastOptions {
   readonly resistorTolerance?: string;
 }
 
-/** How far apart the shares may be where nobody says otherwise, and how far off a usual resistor is. */
-const usual = { imbalance: 0.1, tolerance: 0.05 } as const;
+/**
+ * How far apart the shares may be where nobody says otherwise, and how far off a resistor is. By 5 % of tolerance
+ * alone two modules that are quite alike may be 10 % apart, so that no ballast would ever do.
+ */
+const usual = { imbalance: 0.1, tolerance: 0.01 } as const;
 
 /** @throws BuildUsageError */
 export function ballastWish(options: BallastOptions): Pick<ParallelWish, 'ballast' | 'tolerance'> {
@@ -64,7 +67,7 @@ function toleranceOf(text: string): number {
   if (tolerance >= 0 && tolerance <= 0.5) return tolerance;
   throw new BuildUsageError(
     `--resistor-tolerance is ${shown(text)}, which no resistor is sold with`,
-    'give a share from 0 % to 50 %, such as 5 %',
+    'give a share from 0 % to 50 %, such as 1 %',
   );
 }
 

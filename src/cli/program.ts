@@ -54,7 +54,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
       'have the ballast chosen: the most that shares may differ; "10 %" when left out',
     );
   const tolerance = (): Option =>
-    new Option('--resistor-tolerance <share>', 'of the ballasts; "5 %" when left out');
+    new Option('--resistor-tolerance <share>', 'of the ballasts; "1 %" when left out');
   const sheet = (): Option =>
     new Option('--sheet <file>', 'keep a build sheet, a page with circuit, parts and charts: sheet.html');
 

@@ -7,11 +7,13 @@ import { brief } from './brief.js';
 import { prose, section, sentence } from './prose.js';
 
 /** The resistor in series with each module: what it is, what it bears, what to buy and what it costs. */
-export function ballastText({ ballast, wish }: ParallelBuild, style: Style): string {
+export function ballastText({ ballast, wish, standing }: ParallelBuild, style: Style): string {
   switch (ballast.kind) {
     case 'none':
       return section('Ballast', [prose('None is needed: joined directly they share as wished.')], style);
     case 'impossible':
+      // A refusal has said so first.
+      if (standing.kind === 'must-not-be-built') return '';
       return section('Ballast', [prose(sentence(`None does what is wished: ${ballast.why}`))], style);
     case 'resistor': {
       const wished =

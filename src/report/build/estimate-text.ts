@@ -1,6 +1,7 @@
 import type { Estimate } from '../../arrangement/build.js';
 import { formatInterval } from '../../quantity/format-quantity.js';
 import type { Dimension } from '../../quantity/quantity.js';
+import { briefDigits } from './brief.js';
 
 /** In two columns: `9.68 A` and `9.52 to 9.85 A`. */
 export function estimateCells(estimate: Estimate, dimension: Dimension): [value: string, range: string] {
@@ -21,7 +22,8 @@ export function estimateInWords(estimate: Estimate, dimension: Dimension): strin
 /** The limits alone, their unit said elsewhere: `3.77 to 3.93`; as many decimals as half their distance tells. */
 export function between(low: number, high: number): string {
   const half = Math.abs(high - low) / 2;
-  const decimals = half > 0 ? Math.min(4, Math.max(0, 1 - Math.floor(Math.log10(half)))) : 3;
+  if (!(half > 1e-9 * Math.abs(high))) return briefDigits(low);
+  const decimals = Math.min(3, Math.max(0, 1 - Math.floor(Math.log10(half))));
   const [from, to] = [low.toFixed(decimals), high.toFixed(decimals)];
   return from === to ? from : `${from} to ${to}`;
 }

@@ -67,13 +67,13 @@ function setBy({ recommended }: ParallelBuild): string {
 /** Who meets the limit first, and what comes of it. */
 function inTurn({ firstToSaturate: { module, load, probability, then } }: ParallelBuild): string {
   const sure = probability > 0.95 ? '' : `, with a probability of ${percent(probability)}`;
-  return `${module} reaches its limit first, at a load of ${estimateInWords(load, 'current')}${sure}: ${then}`;
+  return `${module} reaches its limit first, at a load of ${estimateInWords(load, 'current')}${sure}. ${then}`;
 }
 
 /** That nobody takes the sum of labels for the group. */
-function notTheSum({ sumOfSingles, recommended, modules }: ParallelBuild): string {
+function notTheSum({ sumOfSingles, recommended }: ParallelBuild): string {
   if (sumOfSingles.recommended <= recommended.current * 1.005) return '';
-  return `It is not the ${roundedDown(sumOfSingles.recommended, 'current')} that the ${modules.length} could feed one by one, added up`;
+  return `It is not the ${roundedDown(sumOfSingles.recommended, 'current')} that they could feed one by one, added up`;
 }
 
 function groupText(build: ParallelBuild, style: Style): string {
@@ -104,12 +104,7 @@ function withoutBallastText(build: ParallelBuild, style: Style): string {
   if (build.ballast.kind === 'none') return '';
   const { withoutBallast, load } = build;
   const imbalance = estimateInWords(withoutBallast.imbalance, 'ratio');
-  const hog = withoutBallast.hog === undefined ? '' : `; ${withoutBallast.hog} carries most`;
-  const lines = [
-    `At ${loadInWords(load)} the imbalance would be ${imbalance}${hog}`,
-    `As a whole it would fail at ${roundedDown(withoutBallast.failsAt, 'current')}`,
-    ...withoutBallast.story,
-  ];
+  const lines = [`At ${loadInWords(load)} the imbalance would be ${imbalance}`, ...withoutBallast.story];
   return section('Without ballast', bullets(lines), style);
 }
 
@@ -119,14 +114,25 @@ const rests = {
   fails: 'THE REST FAILS',
 } as const;
 
+/** What is to be said of each alike is said once, at the end. */
 function failuresText(build: ParallelBuild, style: Style): string {
-  const lines = build.failures.flatMap(({ module, recommended, usable, rest, sentences }) => [
+  const { failures } = build;
+  const [first] = failures;
+  const ofAll = (first?.sentences ?? []).filter((said) =>
+    failures.every(({ sentences }) => sentences.includes(said)),
+  );
+  const lines = failures.flatMap(({ module, recommended, usable, rest, sentences }) => [
     prose(
-      `Without ${module} ${rests[rest]}: ${roundedDown(recommended, 'current')} continuously, ${roundedDown(usable, 'current')} at most.`,
+      `Without ${module} ${rests[rest]}: it is good for ${roundedDown(recommended, 'current')} continuously and holds ${roundedDown(usable, 'current')}.`,
     ),
-    ...bullets(sentences),
+    ...bullets(sentences.filter((said) => !ofAll.includes(said))),
   ]);
-  return section('When one fails or is switched off', lines, style, `at ${loadInWords(build.load)}`);
+  return section(
+    'When one fails or is switched off',
+    [...lines, ...ofAll.map((said) => prose(sentence(said)))],
+    style,
+    `at ${loadInWords(build.load)}`,
+  );
 }
 
 /** Never all and never nothing: nothing measured is that sure. */
