@@ -25,7 +25,7 @@ export interface Bar {
 const width = 560;
 const barHeight = 14;
 const rowHeight = barHeight + lineHeight + 10;
-const left = 2;
+const left = 6;
 
 export function barChart(chart: BarChart): Markup {
   const { bars, marks = [] } = chart;

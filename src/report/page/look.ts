@@ -90,7 +90,6 @@ section{margin-top:2.6rem}
 .standing svg{width:3.6rem;height:3.6rem;color:var(--c)}
 .standing .outline{fill:none;stroke:currentColor;stroke-width:4;stroke-linejoin:round}
 .standing .sign{fill:none;stroke:currentColor;stroke-width:5;stroke-linecap:round;stroke-linejoin:round}
-.standing ul,.standing .below{grid-column:2}
 .standing p{margin:.3rem 0}
 .standing .word{margin:0;font-size:1.35rem;font-weight:700;line-height:1.25;color:var(--c)}
 .good{--c:var(--good)}.bad{--c:var(--bad)}.unsure{--c:var(--unsure)}
@@ -102,7 +101,7 @@ caption{text-align:left;padding-bottom:.35rem;font-size:.9rem}
 th,td{padding:.38rem .9rem .38rem 0;text-align:left;vertical-align:top;border-bottom:1px solid var(--rule)}
 th:last-child,td:last-child{padding-right:0}
 thead th{font-weight:600;color:var(--soft);font-size:.85rem;border-bottom:1.5px solid var(--ink);vertical-align:bottom}
-tbody th{font-weight:600}
+tbody th{font-weight:600;min-width:5.5rem}
 .number{text-align:right}
 td.number,td.fixed{white-space:nowrap}
 td.long{min-width:13rem}
@@ -134,7 +133,18 @@ ${series.join('\n')}
 .diagram .solid{fill:var(--ink)}
 .diagram .terminal{fill:var(--paper);stroke:var(--ink);stroke-width:1.6}
 .diagram .value{fill:var(--soft)}
-@media (max-width:30rem){h1{font-size:1.6rem}.standing{grid-template-columns:1fr}.standing ul,.standing .below{grid-column:1}}
+@media (max-width:30rem){
+h1{font-size:1.6rem}
+.standing{grid-template-columns:2.2rem 1fr;gap:0 .8rem;padding:1rem}
+.standing svg{width:2.2rem;height:2.2rem}
+.notes thead{position:absolute;left:-99rem}
+.notes tbody,.notes tr,.notes th,.notes caption{display:block}
+.notes tr{padding-block:.5rem;border-bottom:1px solid var(--rule)}
+.notes th,.notes td{padding:.1rem 0;border:0}
+.notes td{display:grid;grid-template-columns:7rem 1fr;gap:.6rem;text-align:left;white-space:normal}
+.notes td::before{content:attr(data-head);color:var(--soft)}
+.notes td:empty{display:none}
+}
 @page{size:A4;margin:16mm 15mm 18mm}
 @media print{
 :root{color-scheme:light;${variables(light)};--paper:#fff}

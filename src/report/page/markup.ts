@@ -45,7 +45,7 @@ function written(content: Content): string {
   if (content instanceof Written) return content.toString();
   if (content === undefined || content === false) return '';
   if (typeof content === 'object') return content.map(written).join('');
-  return escaped(String(content));
+  return escaped(unbroken(String(content)));
 }
 
 function attribute([name, value]: [string, string | number | undefined]): string {
@@ -60,6 +60,11 @@ const escapes: Readonly<Record<string, string>> = {
   '"': '&quot;',
   "'": '&#39;',
 };
+
+/** A number and its unit stay on one line. */
+function unbroken(text: string): string {
+  return text.replace(/(\d) (?=(?:[µmkM]?[VAWΩ]|%|°C|K|min|h|s)(?![\p{L}\d]))/gu, '$1\u00a0');
+}
 
 /** In text and between double quotes alike (HTML Living Standard, 13.3); what steers or hides itself is shown. */
 function escaped(text: string): string {
@@ -79,7 +84,7 @@ export const attributeNames = [
   ...['id', 'class', 'lang', 'role', 'href', 'datetime', 'scope', 'colspan', 'tabindex', 'title'],
   ...['aria-label', 'aria-labelledby', 'aria-describedby', 'aria-hidden'],
   ...['viewBox', 'width', 'height', 'x', 'y', 'dx', 'dy', 'x1', 'y1', 'x2', 'y2', 'cx', 'cy', 'r', 'rx', 'd'],
-  ...['transform', 'text-anchor', 'clip-path', 'data-of'],
+  ...['transform', 'text-anchor', 'clip-path', 'data-of', 'data-head'],
 ] as const;
 const empty: ReadonlySet<string> = new Set(['br', 'wbr']);
 

@@ -8,7 +8,7 @@ export interface Column {
 
 /**
  * A table with a caption and headings for both ways. Where it is wider than the screen it scrolls by itself, by
- * keys as well. Undefined without rows.
+ * keys as well; one with long texts becomes a list of its rows there. Undefined without rows.
  */
 export function table(
   caption: string,
@@ -19,13 +19,16 @@ export function table(
   const heads = columns.map(({ heading, as }) =>
     element('th', { scope: 'col', class: as === 'number' ? 'number' : undefined }, heading),
   );
+  const hasNotes = columns.some(({ as }) => as === 'long');
   const body = rows.map((row) =>
     element(
       'tr',
       {},
       row.map((cell, index) => {
-        const as = columns[index]?.as;
-        return as === 'name' ? element('th', { scope: 'row' }, cell) : element('td', { class: as }, cell);
+        const { as, heading } = columns[index] ?? {};
+        return as === 'name'
+          ? element('th', { scope: 'row' }, cell)
+          : element('td', { class: as, 'data-head': hasNotes ? heading : undefined }, cell);
       }),
     ),
   );
@@ -33,7 +36,7 @@ export function table(
     caption,
     element(
       'table',
-      {},
+      { class: hasNotes ? 'notes' : undefined },
       element('caption', {}, caption),
       element('thead', {}, element('tr', {}, heads)),
       element('tbody', {}, body),

@@ -39,10 +39,12 @@ export function banner(build: AnyBuild, said: readonly string[]): Markup {
       'div',
       {},
       element('p', { class: 'word' }, word),
-      said.map((each) => element('p', { class: 'lead' }, sentence(each))),
+      said.map((each, index) => element('p', { class: index === 0 ? 'lead' : undefined }, sentence(each))),
+      because.length === 1
+        ? element('p', { class: 'lead' }, because.map(sentence))
+        : bullets(because.map(sentence)),
+      seeConcerns(build),
     ),
-    bullets(because.map(sentence)),
-    seeConcerns(build),
   );
 }
 
@@ -51,7 +53,7 @@ function seeConcerns({ concerns }: AnyBuild): Markup | undefined {
   const what = concerns.length === 1 ? 'One thing is' : `${concerns.length} things are`;
   return element(
     'p',
-    { class: 'below' },
+    {},
     `${what} to be known about the records first: `,
     element('a', { href: '#about-the-records' }, 'about the records'),
     '.',

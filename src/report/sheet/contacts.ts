@@ -1,7 +1,7 @@
 import type { Movement, MovementVerdict, StagedBuild } from '../../arrangement/staged-build.js';
 import type { Contact, Sequence } from '../../arrangement/stages-wish.js';
 import { sentence } from '../build/prose.js';
-import { type Content, element, type Markup } from '../page/markup.js';
+import { type Content, element, type Markup, together } from '../page/markup.js';
 import { table } from '../page/table.js';
 
 /** Which contact stands how in which arrangement. */
@@ -44,33 +44,49 @@ function stateOf(contact: Contact, isDriven: boolean): Content {
 }
 
 const inWords: Readonly<Record<Sequence, string>> = {
-  'any-order': 'Any order',
-  'break-before-make': 'Break before make',
-  'make-before-break': 'Make before break',
+  'any-order': 'in any order',
+  'break-before-make': 'break before make',
+  'make-before-break': 'make before break',
 };
 
-/** What the contacts pass through while they move, by how they are driven; that of the builder stands first. */
-export function movements({ switchOvers, wish }: StagedBuild): Markup | undefined {
-  const sequences = [
-    wish.sequence,
-    ...(Object.keys(inWords) as Sequence[]).filter((each) => each !== wish.sequence),
-  ];
-  return table(
-    `While the contacts move, however late each of them is. They are to be driven ${inWords[wish.sequence].toLowerCase()}.`,
-    [
-      { heading: 'Change', as: 'name' },
-      { heading: 'Moving' },
-      ...sequences.map((each) => ({ heading: inWords[each], as: 'long' as const })),
-    ],
-    switchOvers.flatMap(({ lower, upper, goingUp, comingDown }) => [
-      row(`${lower} → ${upper}`, goingUp, sequences),
-      row(`${upper} → ${lower}`, comingDown, sequences),
-    ]),
+/** What the contacts pass through while they move: as they are to be driven, then as it would be otherwise. */
+export function movements({ switchOvers, wish }: StagedBuild): Markup {
+  const others = (Object.keys(inWords) as Sequence[]).filter((each) => each !== wish.sequence);
+  const changes = switchOvers.flatMap(({ lower, upper, goingUp, comingDown }): Change[] => [
+    { name: `${lower} → ${upper}`, movement: goingUp },
+    { name: `${upper} → ${lower}`, movement: comingDown },
+  ]);
+  return together(
+    table(
+      `While the contacts move, driven ${inWords[wish.sequence]}, however late each of them is.`,
+      [
+        { heading: 'Change', as: 'name' },
+        { heading: 'Moving' },
+        { heading: 'What they pass through', as: 'long' },
+      ],
+      changes.map(({ name, movement: { moving, bySequence } }) => [
+        name,
+        moving.join(', '),
+        verdict(bySequence[wish.sequence]),
+      ]),
+    ),
+    table(
+      'The same, if they were driven otherwise.',
+      [
+        { heading: 'Change', as: 'name' },
+        { heading: 'Driven' },
+        { heading: 'What they would pass through', as: 'long' },
+      ],
+      changes.flatMap(({ name, movement: { bySequence } }) =>
+        others.map((each) => [name, inWords[each], verdict(bySequence[each])]),
+      ),
+    ),
   );
 }
 
-function row(change: string, { moving, bySequence }: Movement, sequences: readonly Sequence[]): Content[] {
-  return [change, moving.join(', '), ...sequences.map((each) => verdict(bySequence[each]))];
+interface Change {
+  readonly name: string;
+  readonly movement: Movement;
 }
 
 function verdict(said: MovementVerdict): Content {

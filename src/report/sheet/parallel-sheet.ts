@@ -153,8 +153,11 @@ function sharing(build: ParallelBuild): Markup {
         ...cellsOf(atLoad.shares[index], 'ratio'),
       ]),
     ),
+    element('h3', {}, 'Share of each module'),
     sharesChart(build),
+    element('h3', {}, 'Current of each module'),
     currentsChart(build),
+    element('h3', {}, 'Voltage of the group'),
     voltageChart(build),
   );
 }
@@ -201,10 +204,26 @@ function failures({ failures: each, load }: ParallelBuild): Markup | undefined {
         roundedDown(usable, 'current'),
       ]),
     ),
-    each.map(({ module, sentences }) =>
-      sentences.length === 0 ? undefined : [element('h3', {}, module), bullets(sentences.map(sentence))],
-    ),
+    alike(each).map(({ modules, sentences }) => [
+      element('h3', {}, listed(modules)),
+      bullets(sentences.map(sentence)),
+    ]),
   );
+}
+
+/** What is said of several is said once. */
+function alike(
+  each: readonly ModuleLost[],
+): readonly { readonly modules: readonly string[]; readonly sentences: readonly string[] }[] {
+  const said = new Map<string, { modules: string[]; sentences: readonly string[] }>();
+  for (const { module, sentences } of each) {
+    if (sentences.length === 0) continue;
+    const key = JSON.stringify(sentences);
+    const before = said.get(key);
+    if (before === undefined) said.set(key, { modules: [module], sentences });
+    else before.modules.push(module);
+  }
+  return [...said.values()];
 }
 
 /** Never all and never nothing: nothing measured is that sure. */

@@ -14,8 +14,8 @@ export function partsSection(build: AnyBuild): Markup | undefined {
       'Each mark is that of the circuit; ratings are the least to buy.',
       [
         { heading: 'Mark', as: 'name' },
-        { heading: 'What', as: 'long' },
-        { heading: 'Ratings' },
+        { heading: 'What' },
+        { heading: 'Ratings', as: 'fixed' },
         { heading: 'Why', as: 'long' },
       ],
       build.parts.map(({ marks, what, ratings, why }) => [

@@ -88,7 +88,7 @@ function numbers(build: SeriesBuild): Markup {
                 sentence(recommended.setBy),
               ],
             ]),
-        row('Usable', usable, 'current', `${who} When more is asked: ${sentence(weakest.then)}`),
+        row('Usable', usable, 'current', who),
         row('Voltage at no load', openVoltage, 'voltage', touch(build)),
         row(`Voltage at ${brief(load.current, 'current')}`, voltageAtLoad, 'voltage'),
       ],
@@ -133,9 +133,8 @@ function rails(build: SeriesBuild): Markup {
   );
 }
 
-/** What the reverse diodes are for. */
-function failures({ diodes, weakest }: SeriesBuild): Markup | undefined {
-  if (diodes.length === 0) return undefined;
+/** When more is asked than it gives, and what the reverse diodes are for. */
+function failures({ diodes, weakest }: SeriesBuild): Markup {
   return section(
     'When one fails or gives way',
     element('p', {}, sentence(weakest.then)),
