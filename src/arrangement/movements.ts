@@ -1,0 +1,193 @@
+import { UnfitWishError } from './arrangement-error.js';
+import { forbiddenIn, isForbidden } from './forbidden-connection.js';
+import type { Movement, MovementVerdict } from './staged-build.js';
+import { type Contact, type Sequence, sequences } from './stages-wish.js';
+import {
+  type ContactState,
+  feeds,
+  netlistOf,
+  type Position,
+  settledState,
+  type Switching,
+} from './switching.js';
+
+/** Three positions to the power of ten are some 59,000 states. */
+export const mostMoving = 10;
+
+/** What a moving contact does at one moment. */
+interface Step {
+  readonly does: 'opens' | 'closes';
+  readonly to: Position;
+  readonly words: string;
+}
+
+/** A contact on its way, and whether it does its two steps in an order of its own. */
+interface Mover {
+  readonly contact: string;
+  readonly steps: readonly Step[];
+  readonly kind: 'simple' | 'breaks-first' | 'makes-first';
+}
+
+/**
+ * Every state that the contacts pass through on the way from one arrangement to another when they don't move at
+ * the same time, for each way of driving them.
+ *
+ * Those that open have all opened before any closes, or the other way round, or each moves when it likes. A
+ * change-over contact that does not bridge breaks before it makes by itself, and one that bridges makes before
+ * it breaks, however it is driven; where that goes against the sequence it may move at any moment of it.
+ *
+ * Cost: 2 to the power of the contacts that move, 3 for those that change over, times the loops of the circuit.
+ * @throws UnfitWishError where more contacts move than can be looked at.
+ */
+export function movementBetween(
+  switching: Switching,
+  from: readonly string[],
+  to: readonly string[],
+): Movement {
+  const movers = moversOf(switching.contacts, from, to);
+  if (movers.length > mostMoving) {
+    throw new UnfitWishError(
+      `${movers.length} contacts move at one switch-over; every order of ${mostMoving} at most can be looked at`,
+      'put an arrangement in between, or name contacts once that are one contact',
+    );
+  }
+  const look = lookedAt(switching, settledState(switching.contacts, from), movers);
+  const verdicts = sequences.map((sequence) => [sequence, verdictOf(switching, movers, sequence, look)]);
+  return {
+    moving: movers.map(({ contact }) => contact),
+    bySequence: Object.fromEntries(verdicts) as Movement['bySequence'],
+  };
+}
+
+function moversOf(
+  contacts: readonly Contact[],
+  from: readonly string[],
+  to: readonly string[],
+): readonly Mover[] {
+  return contacts.flatMap((contact): Mover[] => {
+    const drives = to.includes(contact.name);
+    return from.includes(contact.name) === drives ? [] : [moverOf(contact, drives)];
+  });
+}
+
+function moverOf(contact: Contact, drives: boolean): Mover {
+  const { name } = contact;
+  if (contact.kind !== 'change-over') {
+    const closes = (contact.kind === 'make') === drives;
+    const step: Step = closes
+      ? { does: 'closes', to: 'closed', words: `${name} closes` }
+      : { does: 'opens', to: 'open', words: `${name} opens` };
+    return { contact: name, kind: 'simple', steps: [step] };
+  }
+  const end = drives ? 'driven' : 'rest';
+  const [left, reached] = drives ? [contact.rest, contact.driven] : [contact.driven, contact.rest];
+  if (contact.bridges) {
+    const touches: Step = {
+      does: 'closes',
+      to: 'both',
+      words: `${name} reaches ${reached}, still on ${left}`,
+    };
+    return {
+      contact: name,
+      kind: 'makes-first',
+      steps: [touches, { does: 'opens', to: end, words: `${name} leaves ${left}` }],
+    };
+  }
+  const leaves: Step = { does: 'opens', to: 'neither', words: `${name} leaves ${left}` };
+  return {
+    contact: name,
+    kind: 'breaks-first',
+    steps: [leaves, { does: 'closes', to: end, words: `${name} reaches ${reached}` }],
+  };
+}
+
+/** How many of its steps each mover has done. */
+type Progress = readonly number[];
+
+interface Look {
+  readonly forbidden: (progress: Progress) => boolean;
+  readonly feeds: (progress: Progress) => boolean;
+  readonly state: (progress: Progress) => ContactState;
+}
+
+/** The states, each looked at once for all three sequences. */
+function lookedAt(switching: Switching, start: ContactState, movers: readonly Mover[]): Look {
+  const state = (progress: Progress): ContactState => {
+    const moved = new Map(start);
+    for (const [index, { contact, steps }] of movers.entries()) {
+      const step = steps[(progress[index] ?? 0) - 1];
+      if (step !== undefined) moved.set(contact, step.to);
+    }
+    return moved;
+  };
+  const seen = new Map<string, { readonly forbidden: boolean; readonly feeds: boolean }>();
+  const look = (progress: Progress) => {
+    const key = progress.join('');
+    const before = seen.get(key);
+    if (before !== undefined) return before;
+    const netlist = netlistOf(switching, state(progress));
+    const found = { forbidden: isForbidden(netlist), feeds: feeds(netlist) };
+    seen.set(key, found);
+    return found;
+  };
+  return {
+    forbidden: (progress) => look(progress).forbidden,
+    feeds: (progress) => look(progress).feeds,
+    state,
+  };
+}
+
+interface Reached {
+  readonly progress: Progress;
+  readonly order: readonly string[];
+}
+
+/** The states by how many steps lead there, so that the first forbidden one is the nearest. */
+function verdictOf(
+  switching: Switching,
+  movers: readonly Mover[],
+  sequence: Sequence,
+  look: Look,
+): MovementVerdict {
+  const start: Reached = { progress: movers.map(() => 0), order: [] };
+  const reached = new Map<string, Reached>([[start.progress.join(''), start]]);
+  let interrupts = false;
+  for (const { progress, order } of reached.values()) {
+    if (look.forbidden(progress)) {
+      const connection = forbiddenIn(switching, netlistOf(switching, look.state(progress)));
+      if (connection !== undefined) return { kind: 'forbidden', order, connection };
+    }
+    interrupts ||= !look.feeds(progress);
+    for (const [index, { steps }] of movers.entries()) {
+      const step = steps[progress[index] ?? 0];
+      if (step === undefined || !mayStep(movers, progress, index, step, sequence)) continue;
+      const next = progress.map((done, other) => (other === index ? done + 1 : done));
+      const key = next.join('');
+      if (!reached.has(key)) reached.set(key, { progress: next, order: [...order, step.words] });
+    }
+  }
+  return { kind: 'clear', states: reached.size, interrupts };
+}
+
+function mayStep(
+  movers: readonly Mover[],
+  progress: Progress,
+  index: number,
+  { does }: Step,
+  sequence: Sequence,
+): boolean {
+  const own = movers[index]?.kind;
+  const allDone = (what: Step['does'], except: Mover['kind']): boolean =>
+    movers.every(
+      ({ steps, kind }, other) =>
+        kind === except || steps.slice(progress[other] ?? 0).every((left) => left.does !== what),
+    );
+  switch (sequence) {
+    case 'any-order':
+      return true;
+    case 'break-before-make':
+      return does === 'opens' || own === 'makes-first' || allDone('opens', 'makes-first');
+    case 'make-before-break':
+      return does === 'closes' || own === 'breaks-first' || allDone('closes', 'breaks-first');
+  }
+}
