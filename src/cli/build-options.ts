@@ -49,7 +49,7 @@ function resistanceOf(text: string): number {
   if (resistance > 0) return resistance;
   throw new BuildUsageError(
     `--ballast is ${shown(text)}, which is no resistor`,
-    'without one a group is no wish: give a resistance above 0 Ω, or --imbalance to have it chosen; what happens without ballast is told anyway',
+    'give a resistance above 0 Ω, or --imbalance to have one chosen; what happens without any is told either way',
   );
 }
 

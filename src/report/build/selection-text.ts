@@ -16,8 +16,9 @@ import { standingText } from './standing-text.js';
 export function selectionAsText(worked: Selection, style: Style): string {
   const selection = printableData(worked);
   const { best, next } = selection;
+  const chosen = chosenOf(selection);
   return text([
-    headingText(title(selection), selection.modules, style),
+    headingText(title(selection), chosen, style),
     answer(selection, style),
     best === undefined ? '' : assignmentText('Best', best, style),
     next === undefined ? '' : assignmentText('Next best', next, style),
@@ -25,8 +26,15 @@ export function selectionAsText(worked: Selection, style: Style): string {
     partsText(selection, style),
     cautionsText(selection, style),
     concernsText(selection, style),
-    sourcesText(selection.modules, style),
+    sourcesText(chosen, style),
   ]);
+}
+
+/** Those of the best; where there is none, all that there are. */
+function chosenOf({ best, modules }: Selection): Selection['modules'] {
+  if (best === undefined) return modules;
+  const names = best.supplies.flatMap(({ groups }) => groups.flatMap((group) => group.modules));
+  return modules.filter(({ name }) => names.includes(name));
 }
 
 function title({ wish }: Selection): string {
@@ -90,10 +98,21 @@ function assignmentText(
 function restText({ unused, leftOut, considered }: Selection, style: Style): string {
   const lines = [
     ...(unused.length === 0 ? [] : [`Left over: ${listed(unused)}`]),
-    ...leftOut.map(({ module, why }) => `${module} was left out: ${why}`),
+    ...leftOutInWords(leftOut),
     ...(considered > 1 ? [`${considered} assignments were compared`] : []),
   ];
   return section('The rest of the drawer', bullets(lines), style);
+}
+
+/** Those left out for the same reason together. */
+function leftOutInWords(leftOut: Selection['leftOut']): readonly string[] {
+  const alike = new Map<string, string[]>();
+  for (const { module, why } of leftOut) alike.set(why, [...(alike.get(why) ?? []), module]);
+  return [...alike].map(([why, names]) =>
+    names.length === 1
+      ? `${listed(names)} was left out: ${why}`
+      : `Each of ${listed(names)} was left out: ${why}`,
+  );
 }
 
 function inPercent(ratio: number): string {

@@ -83,11 +83,11 @@ function stringText(build: SeriesBuild, style: Style): string {
     .join('\n\n');
 }
 
-/** A quarter, half and three quarters of the load, and the most that was worked out. */
+/** A quarter and half of the load, and the most that was worked out. */
 function curveText({ curve, load }: SeriesBuild, style: Style): string {
   const most = curve.currents.at(-1);
   if (most === undefined) return '';
-  const places = [...[0.25, 0.5, 0.75].map((part) => part * load.current).filter((at) => at < most), most];
+  const places = [...[0.25, 0.5].map((part) => part * load.current).filter((at) => at < most), most];
   const at = (line: readonly number[], place: number): number => valueAt(curve.currents, line, place);
   const rows = [
     ['load, A', ...places.map(briefDigits)],

@@ -30,12 +30,12 @@ function atLoad({ modules, atLoad, load }: ParallelBuild, style: Style): string 
   );
 }
 
-/** A quarter, half and three quarters of the load, and the most that was worked out. */
+/** A quarter and half of the load, and the most that was worked out. */
 function atOthers({ modules, sharing, load }: ParallelBuild, style: Style): string {
   const most = sharing.loads.at(-1);
   const least = sharing.loads[0];
   if (most === undefined || least === undefined) return '';
-  const places = [0.25, 0.5, 0.75]
+  const places = [0.25, 0.5]
     .map((share) => share * load.current)
     .filter((place) => place >= least && place <= most);
   const loads: readonly Amperes[] = [...places, most];
