@@ -26,7 +26,7 @@ export function firstToSaturate(
     };
   }
   const others = listed(profiles.filter((profile) => profile !== first).map(({ name }) => name));
-  const goesOn = end.end > load * (1 + noticeable);
+  const goesOn = end.end > end.firstLoad * (1 + noticeable);
   const then = goesOn
     ? `The group goes on to about ${amps(end.end)}`
     : `The group fails there: ${others} can't carry it`;

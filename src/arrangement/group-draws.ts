@@ -3,16 +3,23 @@ import { imbalanceOf } from '../circuit/imbalance.js';
 import type { CurveLimit } from '../circuit/module-curve.js';
 import { type DrawnBranch, ShareWalk, type WalkCorner, type WalkEnd } from '../circuit/share-walk.js';
 import type { Amperes, Ratio } from '../quantity/quantity.js';
-import { coverageInterval, type DrawnResult } from '../statistics/coverage-interval.js';
+import { coverageInterval, type DrawnInterval, medianOf } from '../statistics/coverage-interval.js';
 import { usualSag } from './drawn-group.js';
+
+/** The draws of one number: as many lie below its median as above. */
+export interface DrawnNumber extends DrawnInterval {
+  readonly median: number;
+}
 
 /** How far a group goes, over all its draws. */
 export interface Extent {
   /** How often each branch is the first at its limit. */
   readonly first: readonly Ratio[];
-  readonly firstLoad: DrawnResult;
+  readonly firstLoad: DrawnNumber;
   /** That it holds, every module within what it is usable for. */
-  readonly usable: DrawnResult;
+  readonly usable: DrawnNumber;
+  /** That it holds at all. */
+  readonly end: DrawnNumber;
 }
 
 export function extentOf(branches: readonly DrawnBranch[]): Extent {
@@ -21,17 +28,24 @@ export function extentOf(branches: readonly DrawnBranch[]): Extent {
   const counts = branches.map(() => 0);
   const firstLoad = new Float64Array(draws);
   const usable = new Float64Array(draws);
+  const ends = new Float64Array(draws);
   for (let draw = 0; draw < draws; draw += 1) {
     const end = walk.climb(draw, []);
     if (end.first >= 0) counts[end.first] = (counts[end.first] ?? 0) + 1;
     firstLoad[draw] = end.firstLoad;
     usable[draw] = Math.min(end.end, end.ceiling);
+    ends[draw] = end.end;
   }
   return {
     first: counts.map((count) => count / draws),
-    firstLoad: coverageInterval(firstLoad),
-    usable: coverageInterval(usable),
+    firstLoad: drawnNumber(firstLoad),
+    usable: drawnNumber(usable),
+    end: drawnNumber(ends),
   };
+}
+
+function drawnNumber(draws: Float64Array): DrawnNumber {
+  return { median: medianOf(draws), ...coverageInterval(draws) };
 }
 
 /** How far the best estimate goes, and what happens on its way. */
@@ -83,7 +97,7 @@ const mostHeld = 2 ** 21;
 export function* drawnAt(
   branches: readonly DrawnBranch[],
   loads: readonly Amperes[],
-): Generator<readonly (DrawnResult | undefined)[]> {
+): Generator<readonly (DrawnInterval | undefined)[]> {
   const draws = drawsOf(branches);
   const width = branches.length + 1;
   const block = Math.max(1, Math.floor(mostHeld / (width * draws)));
@@ -95,14 +109,14 @@ export function* drawnAt(
     for (const load of some.keys()) {
       yield Array.from({ length: width }, (_, column) => {
         const start = (load * width + column) * draws;
-        return drawnResult(values.subarray(start, start + draws));
+        return drawnInterval(values.subarray(start, start + draws));
       });
     }
   }
 }
 
 /** At one load: the imbalance of the currents. */
-export function drawnImbalance(branches: readonly DrawnBranch[], load: Amperes): DrawnResult | undefined {
+export function drawnImbalance(branches: readonly DrawnBranch[], load: Amperes): DrawnInterval | undefined {
   const draws = drawsOf(branches);
   const values = new Float64Array((branches.length + 1) * draws);
   const walk = new ShareWalk(branches, usualSag);
@@ -111,7 +125,7 @@ export function drawnImbalance(branches: readonly DrawnBranch[], load: Amperes):
     walk.climb(draw, [load], { values, draws });
     imbalances[draw] = imbalanceOf(branches.map((_, branch) => values[branch * draws + draw] ?? Number.NaN));
   }
-  return drawnResult(imbalances);
+  return drawnInterval(imbalances);
 }
 
 /** Who carries most at a load, as a share of the draws in which the group holds it. */
@@ -136,7 +150,7 @@ export function mostLoaded(branches: readonly DrawnBranch[], load: Amperes): rea
 const fewest = 40;
 
 /** Of the draws that are numbers; they are moved to the front. */
-function drawnResult(draws: Float64Array): DrawnResult | undefined {
+function drawnInterval(draws: Float64Array): DrawnInterval | undefined {
   let count = 0;
   for (const value of draws) {
     if (Number.isNaN(value)) continue;

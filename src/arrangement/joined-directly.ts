@@ -22,10 +22,10 @@ export function joinedDirectly(
 ): WithoutBallast {
   const best = group.best.map(withoutResistor);
   const drawn = group.drawn.map(withoutResistor);
-  const { usable } = extentOf(drawn);
+  const { end } = extentOf(drawn);
   const up = wayUp(best);
-  const failsAt = Math.min(usable.median, up.end.end);
-  const at = Math.min(load, usable.low * (1 - arithmetic), failsAt * (1 - arithmetic));
+  const failsAt = Math.min(end.median, up.end.end);
+  const at = Math.min(load, end.low * (1 - arithmetic), failsAt * (1 - arithmetic));
   const currents = bestPoints(best, [at])[0]?.branches.map(({ current }) => current) ?? [];
   const most = at > 0 ? mostLoaded(drawn, at).findIndex((share) => share >= surely) : -1;
   const hog = profiles[most]?.name;

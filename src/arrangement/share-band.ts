@@ -1,6 +1,6 @@
 import type { DrawnBranch, WalkCorner } from '../circuit/share-walk.js';
 import type { Amperes } from '../quantity/quantity.js';
-import type { DrawnResult } from '../statistics/coverage-interval.js';
+import type { DrawnInterval } from '../statistics/coverage-interval.js';
 import type { Band, Estimate } from './build.js';
 import { bestPoints, drawnAt } from './group-draws.js';
 import type { ShareBand } from './parallel-build.js';
@@ -37,7 +37,7 @@ export function shareBand({ best, drawn }: KnownGroup, loads: readonly Amperes[]
 }
 
 /** A best estimate within what the draws say of it; alone where they say nothing. */
-export function around(value: number, drawn: Pick<DrawnResult, 'low' | 'high'> | undefined): Estimate {
+export function around(value: number, drawn: DrawnInterval | undefined): Estimate {
   if (drawn === undefined) return { value, low: value, high: value };
   return { value, low: Math.min(value, drawn.low), high: Math.max(value, drawn.high) };
 }

@@ -82,8 +82,8 @@ export class ShareWalk {
   readonly #power: Float64Array;
   readonly #corners: CornerQueue;
   #bent = 0;
-  #sumAtZero = 0;
-  #sumSlope = 0;
+  /** Of all straight ones: at 0 V, and by how much less for each volt. In an array, as numbers in fields would make garbage. */
+  readonly #sums = new Float64Array(2);
 
   constructor(branches: readonly DrawnBranch[], sag: number) {
     const count = branches.length;
@@ -163,8 +163,7 @@ export class ShareWalk {
     this.#atZero.fill(0);
     this.#slope.fill(0);
     this.#bent = 0;
-    this.#sumAtZero = 0;
-    this.#sumSlope = 0;
+    this.#sums.fill(0);
     this.#corners.clear();
     for (let branch = 0; branch < this.#branches.length; branch += 1) {
       const { voltage, limit, ceiling } = this.#branches[branch] as DrawnBranch;
@@ -241,8 +240,8 @@ export class ShareWalk {
       atZero += this.#atZero[branch] as number;
       slope += this.#slope[branch] as number;
     }
-    this.#sumAtZero = atZero;
-    this.#sumSlope = slope;
+    this.#sums[0] = atZero;
+    this.#sums[1] = slope;
   }
 
   #sum(draw: number, bus: number): number {
@@ -277,6 +276,14 @@ export class ShareWalk {
       if (!(next - bus > 4 * Number.EPSILON * bus)) return bus;
       bus = next;
     }
+  }
+
+  get #sumAtZero(): number {
+    return this.#sums[0] as number;
+  }
+
+  get #sumSlope(): number {
+    return this.#sums[1] as number;
   }
 
   #isBent(branch: number): boolean {

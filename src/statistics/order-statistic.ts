@@ -1,12 +1,12 @@
 /**
- * The value that would stand at that place (from 0) if the first `count` values were sorted, rising. They are
+ * The value that would stand at that place (from 0) if the values were sorted, rising. They are
  * put into another order: those before the place are no larger afterwards, those behind it no smaller. Hoare's
  * selection (Communications of the ACM 4 (1961), Algorithm 65) with the median of three as pivot; some
  * twentieth of the time that sorting ten thousand values takes.
  */
-export function orderStatistic(values: Float64Array, place: number, count = values.length): number {
+export function orderStatistic(values: Float64Array, place: number): number {
   let low = 0;
-  let high = count - 1;
+  let high = values.length - 1;
   while (low < high) {
     const pivot = middleOfThree(values, low, high);
     let left = low;
