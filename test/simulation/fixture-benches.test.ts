@@ -11,7 +11,9 @@ import { Instrument } from '../../src/instrument/instrument.js';
 
 const root = join(import.meta.dirname, '../..');
 const shelves = { relativeTo: root, shipped: join(root, 'drivers') };
-const benches = readdirSync(join(root, 'fixtures/benches')).filter((file) => file.endsWith('.yaml'));
+const benches = readdirSync(join(root, 'fixtures/benches'), { encoding: 'utf8', recursive: true }).filter(
+  (file) => file.endsWith('.yaml'),
+);
 
 describe('the benches that come with the project', () => {
   it.each(benches)(
