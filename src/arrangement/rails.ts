@@ -8,12 +8,15 @@ import type { Rail } from './series-build.js';
 /** What a rail's top reaches at its highest is what its isolation must bear. */
 type Place = Pick<Rail, 'top' | 'isolation'>;
 
+/** What stands in a string, as far as its voltages go. */
+export type Stacked = Pick<ModuleProfile, 'name' | 'openCircuit' | 'outputIsolation'>;
+
 /**
  * Where each output of a string stands with no load, the lowest first: Σ of the open-circuit voltages below it,
  * and with its own. The string's 0 V is taken to be earthed, at that point and no other, so each output's
  * isolation to earth has to bear what its upper end stands at, taken at the upper end of its interval.
  */
-export function railsOf(profiles: readonly ModuleProfile[]): readonly Rail[] {
+export function railsOf(profiles: readonly Stacked[]): readonly Rail[] {
   const floats = railVoltages(profiles.map(({ openCircuit }) => openCircuit.value));
   return profiles.map((profile, below) => {
     const upTo = (end: number) =>

@@ -26,19 +26,43 @@ const forwardDrop: Volts = 1.1;
 export function reverseDiodesOf(profiles: readonly ModuleProfile[]): readonly ReverseDiode[] {
   return profiles.map((profile) => {
     const rest = profiles.filter((each) => each !== profile);
-    const pushed = rest.map(mostCurrentOf);
-    const current = Math.max(0, ...pushed.map((most) => most.current));
     const voltage = addedUp(rest.map(({ openCircuit }) => ({ taken: openCircuit, times: 1 }))).high;
-    const blocked = Math.max(voltage, profile.openCircuit.interval[1]);
-    return {
-      module: profile.name,
-      current,
-      ...(pushed.some(({ isKnown }) => !isKnown) ? { bound: 'least' as const } : {}),
-      voltage,
-      heat: heatAt(current),
-      rating: { current: Math.ceil(reserve * current), voltage: gradeFor(reserve * blocked) },
-    };
+    return diodeOf(profile, { rest: rest.map((each) => [each]), voltage });
   });
+}
+
+/**
+ * The same where groups stand one upon the other, a diode across each of their modules: the modules of the other
+ * groups push together, and may all find their way through one of a failed group's diodes.
+ */
+export function groupDiodesOf(groups: readonly (readonly ModuleProfile[])[]): readonly ReverseDiode[] {
+  return groups.flatMap((group) => {
+    const rest = groups.filter((each) => each !== group);
+    const voltage = rest.reduce((sum, each) => sum + highestOf(each), 0);
+    return group.map((profile) => diodeOf(profile, { rest, voltage }));
+  });
+}
+
+function highestOf(group: readonly ModuleProfile[]): Volts {
+  return Math.max(...group.map(({ openCircuit }) => openCircuit.interval[1]));
+}
+
+function diodeOf(
+  { name, openCircuit }: ModuleProfile,
+  { rest, voltage }: { readonly rest: readonly (readonly ModuleProfile[])[]; readonly voltage: Volts },
+): ReverseDiode {
+  const pushed = rest.map((group) => group.map(mostCurrentOf));
+  const sums = pushed.map((group) => group.reduce((sum, most) => sum + most.current, 0));
+  const current = Math.max(0, ...sums);
+  const blocked = Math.max(voltage, openCircuit.interval[1]);
+  return {
+    module: name,
+    current,
+    ...(pushed.flat().some(({ isKnown }) => !isKnown) ? { bound: 'least' as const } : {}),
+    voltage,
+    heat: heatAt(current),
+    rating: { current: Math.ceil(reserve * current), voltage: gradeFor(reserve * blocked) },
+  };
 }
 
 function heatAt(current: Amperes): Watts {

@@ -2,6 +2,7 @@ import { amps } from '../analysis/in-words.js';
 import { touchable } from '../circuit/touchable.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes } from '../quantity/quantity.js';
+import { roundedDown } from '../quantity/rounded-down.js';
 import type { Concern, Standing } from './build.js';
 import type { ModuleProfile } from './module-profile.js';
 import { railVolts } from './rails.js';
@@ -77,7 +78,7 @@ function tooMuch({
 }): readonly string[] {
   return load > recommended && recommended > 0
     ? [
-        `${amps(load)} is asked for, and ${amps(recommended)} is the most that the string is recommended for. Ask for less, or put a stronger module for the weakest.`,
+        `${amps(load)} is asked for, and ${roundedDown(recommended, 'current')} is the most that the string is recommended for. Ask for less, or put a stronger module for the weakest.`,
       ]
     : [];
 }
@@ -96,19 +97,19 @@ function doubtsOf({ profile }: Placed): readonly string[] {
   return doubts;
 }
 
-function isBlindAbove({ verdict, top }: Rail): boolean {
-  return verdict === 'unknown' && top.high > touchable;
+function isolationConcerns({ profile, rail }: Placed): readonly Concern[] {
+  return rail.verdict === 'unknown' ? [isolationUnknown(profile.name, rail.top)] : [];
 }
 
-function isolationConcerns({ profile, rail }: Placed): readonly Concern[] {
-  if (rail.verdict !== 'unknown') return [];
-  return [
-    {
-      kind: 'isolation-unknown',
-      module: profile.name,
-      run: undefined,
-      weight: isBlindAbove(rail) ? 'hinders' : 'weakens',
-      text: `it would stand at up to ${railVolts(rail.top.high)} above earth${isBlindAbove(rail) ? `, beyond the ${touchable} V DC that are safe to touch` : ''}, and nobody knows what its output withstands: find out, and write it into its module file as output-isolation`,
-    },
-  ];
+/** Of a module that would stand so high above earth, nobody knowing what its output bears. */
+export function isolationUnknown(module: string, top: Rail['top']): Concern {
+  const isBeyond = top.high > touchable;
+  const beyond = isBeyond ? `, beyond the ${touchable} V DC that are safe to touch` : '';
+  return {
+    kind: 'isolation-unknown',
+    module,
+    run: undefined,
+    weight: isBeyond ? 'hinders' : 'weakens',
+    text: `it would stand at up to ${railVolts(top.high)} above earth${beyond}, and nobody knows what its output withstands: find out, and write it into its module file as output-isolation`,
+  };
 }

@@ -44,8 +44,9 @@ export type BallastOutcome =
   | { readonly kind: 'too-costly'; readonly imbalance: number; readonly largest: number };
 
 /** Smaller resistors are no parts on a shelf, and joints and wires would outweigh them. */
-const smallest = 1e-3;
-const usualCost = 0.1;
+export const smallest = 1e-3;
+/** Of the lowest open-circuit voltage. */
+export const usualCost = 0.1;
 
 /**
  * The smallest preferred value (IEC 60063) that keeps the worst case within the wanted imbalance at full

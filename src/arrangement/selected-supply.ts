@@ -1,0 +1,146 @@
+import { listed } from '../quantity/listed.js';
+import type { Ohms } from '../quantity/quantity.js';
+import { chosenBallast } from './ballast-choice.js';
+import { bondsOf } from './bonds.js';
+import type { Circuit, Concern, Form, Part, Standing } from './build.js';
+import { groupOf } from './group-form.js';
+import { moduleParts } from './module-parts.js';
+import type { ModuleProfile, Taken } from './module-profile.js';
+import type { ParallelBuild } from './parallel-build.js';
+import { parallelCautions } from './parallel-cautions.js';
+import { ballastParts, parallelParts } from './parallel-parts.js';
+import { parallelStanding } from './parallel-standing.js';
+import type { PlacedGroup } from './places.js';
+import { railsOf, type Stacked } from './rails.js';
+import { groupDiodesOf } from './reverse-diodes.js';
+import type { Rail } from './series-build.js';
+import type { SelectionWish } from './selection.js';
+import { seriesCautions } from './series-cautions.js';
+import { seriesParts } from './series-parts.js';
+import { isolationUnknown } from './series-standing.js';
+
+/** Groups of one supply, the lowest first. */
+export type Supply = readonly PlacedGroup[];
+
+/** What a supply is wished with, and the ballast that was chosen for all. */
+export type Wished = Pick<SelectionWish, 'ballast' | 'tolerance'> & { readonly resistance: Ohms };
+
+/** What is drawn of a supply. */
+export function circuitOf(supply: Supply, { resistance, tolerance }: Wished): Circuit {
+  const groups: readonly Form[] = supply.map(({ modules }) => groupOf(modules));
+  const [first] = groups;
+  const isStack = first === undefined || groups.length > 1;
+  return {
+    form: isStack ? { kind: 'stack', of: groups } : first,
+    ballast: resistance > 0 ? { resistance, tolerance } : undefined,
+    reverseDiodes: isStack,
+    orDiodes: false,
+  };
+}
+
+/** What is bought for a supply: what its groups need and, where they stand upon each other, a diode across each module. */
+export function partsOf(supply: Supply, wished: Wished): readonly Part[] {
+  const modules = modulesIn(supply);
+  const [first, ...others] = supply;
+  if (first === undefined) return [];
+  if (others.length === 0) {
+    return first.modules.length > 1
+      ? parallelParts(first.modules, worstBallast(supply, wished))
+      : moduleParts(modules);
+  }
+  return [
+    ...seriesParts(modules, groupDiodesOf(supply.map((group) => group.modules))),
+    ...ballastParts(modules, worstBallast(supply, wished)),
+  ];
+}
+
+/** What whoever builds a supply must know. */
+export function cautionsOf(supply: Supply, wished: Wished): readonly string[] {
+  const ofGroups = supply
+    .filter(({ modules }) => modules.length > 1)
+    .flatMap(({ modules }) => parallelCautions(modules, worstBallast(supply, wished)));
+  const rails = railsIn(supply);
+  const ofStack = supply.length > 1 ? seriesCautions(rails, bondsOf(rails)) : [];
+  const alone = [
+    'The module is fed from the mains: its case stays closed, and its output is proved dead with a meter before anything is wired.',
+  ];
+  return [...new Set([...ofStack, ...ofGroups, ...(ofStack.length + ofGroups.length === 0 ? alone : [])])];
+}
+
+/** What hinders or weakens a supply. Its modules have been sorted, so of how they stand to earth nothing is left to refuse. */
+export function standingOfSupply(
+  supply: Supply,
+  wished: Wished,
+): { readonly standings: readonly Standing[]; readonly concerns: readonly Concern[] } {
+  const rails = railsIn(supply);
+  const groups = supply
+    .filter(({ modules }) => modules.length > 1)
+    .map(({ modules, limit }) =>
+      parallelStanding(
+        modules,
+        { ...wished, load: undefined },
+        { ballast: worstBallast(supply, wished), recommended: limit },
+      ),
+    );
+  return {
+    standings: groups.map(({ standing }) => standing),
+    concerns: [
+      ...modulesIn(supply).flatMap(({ concerns }) => concerns),
+      ...supply.slice(1).flatMap(({ modules }, index) => unknownIn(modules, rails[index + 1])),
+    ],
+  };
+}
+
+function unknownIn(modules: readonly ModuleProfile[], rail: Rail | undefined): readonly Concern[] {
+  if (rail === undefined) return [];
+  return modules
+    .filter(({ outputIsolation }) => outputIsolation === 'unknown')
+    .map(({ name }) => isolationUnknown(name, rail.top));
+}
+
+export function modulesIn(supply: Supply): readonly ModuleProfile[] {
+  return supply.flatMap(({ modules }) => modules);
+}
+
+/** One value for all; of the group in which it has to bear most. */
+function worstBallast(supply: Supply, { resistance, tolerance }: Wished): ParallelBuild['ballast'] {
+  if (resistance === 0) return { kind: 'none' };
+  const each = supply.map(({ modules, limit }) => chosenBallast(modules, { resistance, tolerance }, limit));
+  const worst = each.toSorted((one, other) => other.dissipation - one.dissipation).at(0);
+  if (worst === undefined) return { kind: 'none' };
+  const atLimit = Math.max(...each.map(({ dissipationAtLimit }) => dissipationAtLimit));
+  const ratings = each.map(({ rating }) => rating);
+  return {
+    ...worst,
+    dissipationAtLimit: atLimit,
+    rating: ratings.includes(undefined) ? undefined : Math.max(...ratings.map((rating = 0) => rating)),
+  };
+}
+
+function railsIn(supply: Supply): readonly Rail[] {
+  return railsOf(supply.map(({ modules }) => asOne(modules)));
+}
+
+/** A group as it stands in a stack: its open voltage lies between the lowest and the highest of its modules. */
+function asOne(modules: readonly ModuleProfile[]): Stacked {
+  const [first, ...others] = modules;
+  if (first === undefined) throw new RangeError('a group of no modules');
+  if (others.length === 0) return first;
+  const voltages = modules.map(({ openCircuit }) => openCircuit);
+  const low = Math.min(...voltages.map(({ interval }) => interval[0]));
+  const high = Math.max(...voltages.map(({ interval }) => interval[1]));
+  const openCircuit: Taken = {
+    ...first.openCircuit,
+    value: Math.max(...voltages.map(({ value }) => value)),
+    interval: [low, high],
+    budget: [],
+  };
+  const isolations = modules.map(({ outputIsolation }) => outputIsolation);
+  return {
+    name: listed(modules.map(({ name }) => name)),
+    openCircuit,
+    outputIsolation: isolations.includes('unknown')
+      ? 'unknown'
+      : Math.min(...isolations.map((isolation) => (isolation === 'unknown' ? 0 : isolation))),
+  };
+}
