@@ -1,0 +1,90 @@
+import { volts } from '../analysis/in-words.js';
+import { touchable } from '../circuit/touchable.js';
+import { listed } from '../quantity/listed.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Volts } from '../quantity/quantity.js';
+import { hasStack, type LaidOut } from './laid-out.js';
+import { mostMoving, movementBetween } from './movements.js';
+import type { StagesFound } from './stages-standing.js';
+import type { SwitchOver } from './staged-build.js';
+
+/** What whoever builds a staged supply must know, a sentence or two each; the heaviest first. */
+export function stagesCautions(found: StagesFound): readonly string[] {
+  const { laid, switchOvers } = found;
+  return [
+    'The modules are fed from the mains: their cases stay closed, all are unplugged before anything is wired, and outputs are proved dead with a meter first, as capacitors hold their charge.',
+    ...touchCaution(laid),
+    ...(laid.some(({ found: { circuit } }) => hasStack(circuit.form))
+      ? [
+          'Earth one point of the supply at most, and that is in-. Whatever is joined to an output earths it as well: a meter or a load with an earthed 0 V may be joined to the whole supply only.',
+        ]
+      : []),
+    ...fallBackCautions(found),
+    ...interruptCautions(found),
+    ...unusedCautions(found),
+    'Contacts break a direct current, which does not go out by itself: take their rating for DC at the voltage named, switch with little or no load where that can be had, and expect bounce. What is said here of the order of contacts holds for contacts that work: one that is welded is not among the orders.',
+    `What is guaranteed is for currents that hold for good. At each switch-over the input of the linear stage jumps, by up to ${volts(highestSwing(switchOvers))}: its output must bear that without passing it on.`,
+    'The heat is that of the linear stage alone, at the highest voltage that the modules may have. Whatever else stands before or behind it gets warm too.',
+    'All modules are switched on and off together, from one switched supply.',
+    'Local codes and a licensed person decide what may be joined to the mains and to earth, and how.',
+  ];
+}
+
+export function highestOf(laid: readonly LaidOut[]): Volts {
+  return Math.max(...laid.map(({ found }) => found.openVoltage.high));
+}
+
+function touchCaution(laid: readonly LaidOut[]): readonly string[] {
+  const highest = highestOf(laid);
+  return highest > touchable
+    ? [
+        `It reaches ${formatQuantity(highest, 'voltage', { significant: 4 })} before the linear stage, beyond the ${touchable} V DC that are safe to touch (ES1, IEC 62368-1): cover all of it, so that nothing can be reached without a tool.`,
+      ]
+    : [];
+}
+
+/** Relays that lose their supply fall back one by one, and no sequence holds any more. */
+function fallBackCautions({ laid, switching, wish }: StagesFound): readonly string[] {
+  if (wish.sequence === 'any-order') return [];
+  return laid.flatMap(({ found: { name }, driven }) => {
+    if (driven.length === 0 || driven.length > mostMoving) return [];
+    const verdict = movementBetween(switching, driven, []).bySequence['any-order'];
+    return verdict.kind === 'clear'
+      ? []
+      : [
+          `When the contacts lose their supply in ${name} they fall back in any order: ${verdict.order.join(', then ')}, and ${verdict.connection.sentence}. The modules must be off before the contacts are, or the contacts hold until the outputs are dead.`,
+        ];
+  });
+}
+
+function interruptCautions({ switchOvers, wish }: StagesFound): readonly string[] {
+  const interrupted = switchOvers.flatMap(({ lower, upper, goingUp, comingDown }) => {
+    const isDark = [goingUp, comingDown].some(({ bySequence }) => {
+      const verdict = bySequence[wish.sequence];
+      return verdict.kind === 'clear' && verdict.interrupts;
+    });
+    return isDark ? [`${lower} and ${upper}`] : [];
+  });
+  return interrupted.length === 0
+    ? []
+    : [
+        `Between ${listed(interrupted)} the linear stage is without any feed while the contacts move: a capacitor at its input has to carry the load for that time (C = I·t/ΔV), or the output dips.`,
+      ];
+}
+
+/** Arrangements that the output range never comes to. */
+function unusedCautions({ switchOvers, wish }: StagesFound): readonly string[] {
+  const never = [
+    ...switchOvers.filter(({ up }) => up <= wish.output.from).map(({ lower }) => lower),
+    ...switchOvers.filter(({ up }) => up >= wish.output.to).map(({ upper }) => upper),
+  ];
+  return never.length === 0
+    ? []
+    : [
+        `${listed(never)} ${never.length === 1 ? 'is' : 'are'} never used as the output rises within its range.`,
+      ];
+}
+
+function highestSwing(switchOvers: readonly SwitchOver[]): Volts {
+  return Math.max(0, ...switchOvers.map(({ swing }) => swing.noLoad));
+}

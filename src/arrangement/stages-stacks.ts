@@ -1,0 +1,102 @@
+import { railVoltages } from '../circuit/rail-voltages.js';
+import type { Volts } from '../quantity/quantity.js';
+import type { Concern, Estimate, Form, Standing } from './build.js';
+import { hasStack, type LaidOut } from './laid-out.js';
+import type { ModuleProfile } from './module-profile.js';
+import type { Rail } from './series-build.js';
+import { seriesStanding } from './series-standing.js';
+
+/**
+ * What the rules for a string say of the modules that are ever stacked, each at the highest place that any
+ * arrangement gives it. Those that lie at the 0 V of the supply are each a lowest one.
+ */
+export function stackStanding(
+  profiles: readonly ModuleProfile[],
+  laid: readonly LaidOut[],
+): { readonly standings: readonly Standing[]; readonly concerns: readonly Concern[] } {
+  const rails = highestRails(profiles, laid);
+  const placed = rails.flatMap((rail) => {
+    const profile = profiles.find(({ name }) => name === rail.module);
+    return profile === undefined ? [] : [{ profile, rail }];
+  });
+  const [lowest, ...others] = placed.filter(({ rail }) => rail.float.high === 0);
+  const above = placed.filter(({ rail }) => rail.float.high > 0);
+  const strings = [lowest === undefined ? above : [lowest, ...above], ...others.map((each) => [each])];
+  const judged = strings.map((string) =>
+    seriesStanding(
+      string.map(({ profile }) => profile),
+      { rails: string.map(({ rail }) => rail), recommended: 0, load: 0 },
+    ),
+  );
+  return {
+    standings: judged.map(({ standing }) => standing),
+    concerns: judged.flatMap(({ concerns }) => concerns),
+  };
+}
+
+/** Of each module that is ever stacked, where it stands highest; the lowest first. */
+export function highestRails(profiles: readonly ModuleProfile[], laid: readonly LaidOut[]): readonly Rail[] {
+  const highest = new Map<string, Rail>();
+  for (const { found } of laid) {
+    if (!hasStack(found.circuit.form)) continue;
+    for (const rail of railsIn(found.circuit.form, nothing, profiles)) {
+      if (rail.top.high > (highest.get(rail.module)?.top.high ?? 0)) highest.set(rail.module, rail);
+    }
+  }
+  return [...highest.values()].sort((one, other) => one.float.value - other.float.value);
+}
+
+const nothing: Estimate = { value: 0, low: 0, high: 0 };
+
+/** With no load, ballasts take nothing. */
+function railsIn(form: Form, below: Estimate, profiles: readonly ModuleProfile[]): readonly Rail[] {
+  if (form.kind === 'module') return railOf(form.name, below, profiles);
+  if (form.kind === 'group') return form.of.flatMap((part) => railsIn(part, below, profiles));
+  const heights = form.of.map((part) => heightOf(part, profiles));
+  const end = (which: 'value' | 'low' | 'high'): readonly Volts[] =>
+    railVoltages(heights.map((height) => height[which]));
+  const [values, lows, highs] = [end('value'), end('low'), end('high')];
+  return form.of.flatMap((part, index) =>
+    railsIn(
+      part,
+      {
+        value: below.value + (values[index] ?? 0),
+        low: below.low + (lows[index] ?? 0),
+        high: below.high + (highs[index] ?? 0),
+      },
+      profiles,
+    ),
+  );
+}
+
+function railOf(module: string, float: Estimate, profiles: readonly ModuleProfile[]): readonly Rail[] {
+  const profile = profiles.find(({ name }) => name === module);
+  if (profile === undefined) return [];
+  const own = heightOf({ kind: 'module', name: module }, profiles);
+  const top = { value: float.value + own.value, low: float.low + own.low, high: float.high + own.high };
+  const isolation = profile.outputIsolation;
+  const verdict =
+    float.high === 0
+      ? 'not-needed'
+      : isolation === 'unknown'
+        ? 'unknown'
+        : top.high <= isolation
+          ? 'within'
+          : 'beyond';
+  return [{ module, float, top, isolation, verdict }];
+}
+
+/** With no load a group stands where its highest does. */
+function heightOf(form: Form, profiles: readonly ModuleProfile[]): Estimate {
+  if (form.kind === 'module') {
+    const taken = profiles.find(({ name }) => name === form.name)?.openCircuit;
+    return taken === undefined
+      ? nothing
+      : { value: taken.value, low: taken.interval[0], high: taken.interval[1] };
+  }
+  const join = (which: 'value' | 'low' | 'high'): Volts => {
+    const heights = form.of.map((part) => heightOf(part, profiles)[which]);
+    return form.kind === 'group' ? Math.max(...heights) : heights.reduce((sum, each) => sum + each, 0);
+  };
+  return { value: join('value'), low: join('low'), high: join('high') };
+}
