@@ -59,7 +59,8 @@ function guaranteedAt(
     { current: currentAt(laid.low, output + linearStage.dropOut), setBy: 'drop-out' },
     { current: currentWithin(laid.high, output, mostDissipation), setBy: 'dissipation' },
   ];
-  const least = limits.reduce((one, other) => (other.current < one.current ? other : one));
+  // At a switch-over the drop-out leaves just the full current, but for arithmetic.
+  const least = limits.reduce((one, other) => (other.current < one.current * (1 - arithmetic) ? other : one));
   return { arrangement: laid.found.name, ...least };
 }
 

@@ -156,11 +156,12 @@ function mostDrop(form: FormBehindDrops): Volts {
   }
 }
 
-function drawn(form: Form, made: FormBehindDrops, { ballast }: StagesWish): Circuit {
+/** A module that is stacked in one arrangement has its diode in all of them. */
+function drawn(form: Form, made: FormBehindDrops, { ballast, arrangements }: StagesWish): Circuit {
   return {
     form,
     ballast: ballast && { resistance: ballast.resistance, tolerance: ballast.tolerance },
-    reverseDiodes: hasStack(form),
+    reverseDiodes: arrangements.some((each) => hasStack(each.form)),
     orDiodes: made.kind !== 'module' && everyModuleBehind(made),
   };
 }

@@ -5,7 +5,7 @@ import type { Amperes, Volts, Watts } from '../quantity/quantity.js';
 import type { Form, Part } from './build.js';
 import { modulesOf } from './build.js';
 import { gradeFor } from './diode-grade.js';
-import { type LaidOut } from './laid-out.js';
+import { hasStack, type LaidOut } from './laid-out.js';
 import { moduleParts } from './module-parts.js';
 import type { ModuleProfile } from './module-profile.js';
 import { mostCurrentOf } from './most-current.js';
@@ -70,7 +70,7 @@ function ballastPart(
 
 /** By the arrangement of the highest voltage that stacks anything. */
 function reverseDiodes(profiles: readonly ModuleProfile[], laid: readonly LaidOut[]): readonly Part[] {
-  const stacked = laid.findLast(({ found }) => found.circuit.reverseDiodes)?.found.circuit.form;
+  const stacked = laid.findLast(({ found }) => hasStack(found.circuit.form))?.found.circuit.form;
   if (stacked === undefined) return [];
   const groups = stackedGroups(stacked).map((names) => profiles.filter(({ name }) => names.includes(name)));
   return seriesParts([], groupDiodesOf(groups));
