@@ -17,14 +17,14 @@ export function dissipationText({ map, mostDissipation }: StagedBuild, style: St
     briefDigits(map.outputs[at] ?? Number.NaN),
     ...currents.map((each) => {
       const watts = map.watts[at]?.[each];
-      return watts === null || watts === undefined ? '·' : briefDigits(watts);
+      return watts === null || watts === undefined ? '·' : watts.toFixed(1);
     }),
   ]);
   return section(
     'Heat of the linear stage, W',
     alignTable([head, ...lines], ['right', ...currents.map(() => 'right' as const)]),
     style,
-    `at most ${brief(mostDissipation, 'power')}; output down, current across; · not guaranteed`,
+    `at most ${brief(mostDissipation, 'power')}; · beyond what is guaranteed`,
   );
 }
 

@@ -23,8 +23,12 @@ export function bullets(texts: readonly string[]): string[] {
 
 /** With its capital and its full stop, wherever it came from. */
 export function sentence(text: string): string {
-  const capital = text.replace(/^[a-z](?=[a-z' ])/, (first) => first.toUpperCase());
-  return /[.!?:]$/.test(capital) ? capital : `${capital}.`;
+  return stopped(text.replace(/^[a-z](?=[a-z' ])/, (first) => first.toUpperCase()));
+}
+
+/** With its full stop; it may begin with a name, which keeps its letters. */
+export function stopped(text: string): string {
+  return /[.!?:]$/.test(text) ? text : `${text}.`;
 }
 
 /** A heading, a faint remark beside it, and its lines set in; nothing where there are no lines. */

@@ -1,4 +1,5 @@
 import type { Guaranteed, Movement, MovementVerdict, StagedBuild } from '../../arrangement/staged-build.js';
+import { type Sequence, sequences } from '../../arrangement/stages-wish.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { alignTable } from '../align.js';
 import { printableData } from '../printable.js';
@@ -9,7 +10,7 @@ import { estimateCells } from './estimate-text.js';
 import { formInSigns } from './form-text.js';
 import { headingText } from './heading-text.js';
 import { cautionsText, partsText } from './parts-text.js';
-import { bullets, prose, section, sentence, text } from './prose.js';
+import { prose, section, stopped, text } from './prose.js';
 import { concernsText, sourcesText } from './records-text.js';
 import { standingText } from './standing-text.js';
 
@@ -33,17 +34,20 @@ export function stagesAsText(worked: StagedBuild, style: Style): string {
 
 function answer(build: StagedBuild, style: Style): string {
   const { wish, guaranteed } = build;
-  const all = guaranteed.flatMap(({ output, rising, falling }) =>
-    [rising, falling].map(({ current }) => ({ output, current })),
-  );
-  const least = all.reduce((one, other) => (other.current < one.current ? other : one), all[0] ?? none);
-  const most = all.reduce((one, other) => (other.current > one.current ? other : one), all[0] ?? none);
+  const [first, ...others] = guaranteed.flatMap(({ output, rising, falling }) => [
+    { output, current: rising.current, coming: '' },
+    { output, current: falling.current, coming: ', coming down' },
+  ]);
   const range = `from ${brief(wish.output.from, 'voltage')} to ${brief(wish.output.to, 'voltage')}`;
-  const what = `${wish.name} gives ${range}, and at least ${roundedDown(least.current, 'current')} anywhere in it, with the least at ${brief(least.output, 'voltage')} and the most, ${roundedDown(most.current, 'current')}, at ${brief(most.output, 'voltage')}`;
+  if (first === undefined)
+    return standingText(build, { what: `${wish.name} gives ${range}`, tooLittle: '' }, style);
+  const least = others.reduce((one, other) => (other.current < one.current ? other : one), first);
+  const most = others.reduce((one, other) => (other.current > one.current ? other : one), first);
+  const feeds = ({ output, current, coming }: typeof first): string =>
+    `${roundedDown(current, 'current')} at ${brief(output, 'voltage')}${coming}`;
+  const what = `${wish.name} gives ${range} and feeds at least ${roundedDown(least.current, 'current')} at each of them; the least is ${feeds(least)}, the most ${feeds(most)}`;
   return standingText(build, { what, tooLittle: what }, style);
 }
-
-const none = { output: Number.NaN, current: 0 };
 
 const limits: Readonly<Record<Guaranteed['setBy'], string>> = {
   module: 'the modules',
@@ -74,7 +78,7 @@ function guaranteedText(build: StagedBuild, style: Style): string {
     'What it is guaranteed to feed',
     alignTable([head, ...rows], ['left', 'left', 'left', 'left']),
     style,
-    'output rising',
+    'output rising; coming down it may be less',
   );
 }
 
@@ -84,21 +88,21 @@ function spanOf(from: number, to: number): string {
 }
 
 function arrangementsText({ arrangements }: StagedBuild, style: Style): string {
-  const head = ['', '', 'no load', 'full current', 'at most', 'set by'];
-  const rows = arrangements.map(({ name, circuit, openVoltage, fullVoltage, current, setBy }) => [
+  const head = ['', '', 'no load', 'full current', 'at most'];
+  const rows = arrangements.map(({ name, circuit, openVoltage, fullVoltage, current }) => [
     name,
     formInSigns(circuit.form),
     estimateCells(openVoltage, 'voltage')[0],
     estimateCells(fullVoltage, 'voltage')[0],
     roundedDown(current, 'current'),
-    setBy,
   ]);
-  const closed = arrangements.map(({ name, closed: contacts }) =>
-    prose(contacts.length === 0 ? 'no contact closed' : `closed: ${contacts.join(', ')}`, `${name}: `),
-  );
+  const more = arrangements.flatMap(({ name, closed, setBy }) => [
+    prose(closed.length === 0 ? 'no contact closed.' : `closed are ${closed.join(', ')}.`, `${name}: `),
+    prose(stopped(`no more because of ${setBy}`), `${name}: `),
+  ]);
   return section(
     'Arrangements',
-    [...alignTable([head, ...rows], ['left', 'left', 'right', 'right', 'right', 'left']), ...closed],
+    [...alignTable([head, ...rows], ['left', 'left', 'right', 'right', 'right']), ...more],
     style,
     '∥ side by side, + in a stack, the lowest first',
   );
@@ -124,34 +128,39 @@ function switchOversText({ switchOvers }: StagedBuild, style: Style): string {
 /** What the contacts pass through while they move; the order that the builder chose decides. */
 function movementsText({ switchOvers, wish }: StagedBuild, style: Style): string {
   const lines = switchOvers.flatMap((over) => [
-    ...movementLines(`${over.lower} → ${over.upper}`, over.goingUp, wish.sequence),
-    ...movementLines(`${over.upper} → ${over.lower}`, over.comingDown, wish.sequence),
+    movementInWords(`${over.lower} → ${over.upper}`, over.goingUp, wish.sequence),
+    movementInWords(`${over.upper} → ${over.lower}`, over.comingDown, wish.sequence),
   ]);
-  return section('While the contacts move', bullets(lines), style, `driven ${inWords[wish.sequence]}`);
+  return section(
+    'While the contacts move',
+    lines.map((line) => prose(line, '- ')),
+    style,
+    `driven ${inWords[wish.sequence]}`,
+  );
 }
 
-const inWords = {
+const inWords: Readonly<Record<Sequence, string>> = {
   'any-order': 'in any order',
   'break-before-make': 'break before make',
   'make-before-break': 'make before break',
-} as const;
+};
 
-function movementLines(what: string, movement: Movement, sequence: keyof typeof inWords): string[] {
-  const decisive = movement.bySequence[sequence];
-  const others = (Object.keys(inWords) as (keyof typeof inWords)[])
-    .filter((each) => each !== sequence)
-    .map((each) => `${inWords[each]} ${shortly(movement.bySequence[each])}`);
-  return [`${what} (${movement.moving.join(', ')}): ${atLength(decisive)} Else: ${others.join('; ')}`];
+/** Of the other ways of driving them, those by which it would come out otherwise. */
+function movementInWords(what: string, { moving, bySequence }: Movement, sequence: Sequence): string {
+  const decisive = bySequence[sequence];
+  const otherwise = sequences
+    .filter((each) => bySequence[each].kind !== decisive.kind)
+    .map((each) => inWords[each]);
+  const besides =
+    otherwise.length === 0
+      ? ''
+      : ` Driven ${otherwise.join(' or ')} it would be ${decisive.kind === 'clear' ? 'FORBIDDEN' : 'clear'}.`;
+  return `${what} (${moving.join(', ')}): ${verdictInWords(decisive)}${besides}`;
 }
 
-function shortly(verdict: MovementVerdict): string {
-  if (verdict.kind === 'forbidden') return 'would be forbidden';
-  return verdict.interrupts ? 'would be clear, the feed interrupted' : 'would be clear';
-}
-
-function atLength(verdict: MovementVerdict): string {
+function verdictInWords(verdict: MovementVerdict): string {
   if (verdict.kind === 'forbidden')
-    return `FORBIDDEN when ${verdict.order.join(', then ')}: ${sentence(verdict.connection.sentence)}`;
+    return `FORBIDDEN when ${verdict.order.join(', then ')}: ${stopped(verdict.connection.sentence)}`;
   const states = verdict.states === 1 ? 'the one state' : `all ${verdict.states} states`;
   return `clear in ${states}${verdict.interrupts ? '; the feed is interrupted for a moment' : ''}.`;
 }

@@ -1,7 +1,7 @@
 import type { Standing } from '../../arrangement/build.js';
 import type { Style } from '../style.js';
 import { type AnyBuild, outcomeOf } from './any-build.js';
-import { bullets, prose, sentence } from './prose.js';
+import { bullets, prose, sentence, stopped } from './prose.js';
 
 const refusals = {
   'must-not-be-built': 'MUST NOT BE BUILT',
@@ -20,9 +20,9 @@ export function standingText(
   const outcome = outcomeOf(build);
   switch (outcome) {
     case 'may-be-built':
-      return style.strong(prose(`May be built: ${sentence(said.what)}`));
+      return style.strong(prose(`May be built: ${stopped(said.what)}`));
     case 'too-little':
-      return style.warn(prose(`TOO LITTLE: ${sentence(said.tooLittle)}`));
+      return style.warn(prose(`TOO LITTLE: ${stopped(said.tooLittle)}`));
     case 'must-not-be-built':
     case 'cannot-tell':
       return refusal(refusals[outcome], build.standing, style);

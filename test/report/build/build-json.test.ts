@@ -4,7 +4,16 @@ import { buildAsJson } from '../../../src/report/build/build-json.js';
 import { jsonText } from '../../../src/report/json-text.js';
 import { madeProfile } from '../../arrangement/made-profile.js';
 import { buildParallel } from '../../../src/arrangement/build-parallel.js';
-import { bricks, chosen, pair, string, stringUnproved, stringWithBonded } from './made-builds.js';
+import {
+  bricks,
+  chosen,
+  pair,
+  staged,
+  stagedThatShorts,
+  string,
+  stringUnproved,
+  stringWithBonded,
+} from './made-builds.js';
 
 type Json = null | boolean | number | string | readonly Json[] | { readonly [key: string]: Json };
 
@@ -18,6 +27,8 @@ const builds: readonly (readonly [string, AnyBuild])[] = [
   ['a stack', string()],
   ['a selection', chosen()],
   ['a selection out of too few', chosen({ supplies: 5 })],
+  ['a staged supply', staged()],
+  ['a staged supply that shorts a module', stagedThatShorts()],
 ];
 
 describe('the JSON of what may be built', () => {
@@ -102,6 +113,35 @@ describe('the JSON of what may be built', () => {
       best: { recommended: { unit: 'A' }, supplies: [{ groups: [{ imbalance: { unit: '%' } }] }] },
     });
     expect(read(chosen({ supplies: 5 }))).toMatchObject({ best: null, next: null, circuit: null });
+  });
+
+  it('gives a staged supply its switch-overs, what it guarantees, and its heat', () => {
+    const json = read(staged());
+    expect(json).toMatchObject({
+      format: 'railproof/staged-supply 1',
+      name: 'valve-bench',
+      outcome: 'may-be-built',
+      sequence: 'any-order',
+      linearStage: { most: { value: 25, unit: 'W' } },
+      arrangements: [{ name: 'pair' }, { name: 'two' }, { name: 'three' }],
+      switchOvers: [
+        {
+          lower: 'pair',
+          upper: 'two',
+          goingUp: { verdicts: [{ sequence: 'any-order', kind: 'clear' }, {}, {}] },
+        },
+        { lower: 'two', upper: 'three' },
+      ],
+    });
+    const { output, current, watts } = json['dissipation'] as {
+      output: { values: number[] };
+      current: { values: number[] };
+      watts: (number | null)[][];
+    };
+    expect(watts).toHaveLength(output.values.length);
+    for (const row of watts) expect(row).toHaveLength(current.values.length);
+    expect(Math.max(...watts.flat().map((each) => each ?? 0))).toBeLessThanOrEqual(25 + 1e-6);
+    expect(read(stagedThatShorts())).toMatchObject({ outcome: 'must-not-be-built', parts: [] });
   });
 
   it('gives null for an interval without an end', () => {

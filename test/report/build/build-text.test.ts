@@ -10,6 +10,8 @@ import {
   chosen,
   pair,
   pairThatNothingHelps,
+  staged,
+  stagedThatShorts,
   string,
   stringUnproved,
   stringWithBonded,
@@ -27,6 +29,8 @@ const builds = {
   'series-unproved': stringUnproved(),
   selection: chosen(),
   'selection-too-few': chosen({ supplies: 5 }),
+  stages: staged(),
+  'stages-refused': stagedThatShorts(),
 } as const;
 
 describe('the text of what may be built', () => {
@@ -55,6 +59,24 @@ describe('the text of what may be built', () => {
       /^May be built: K1, K2 and K3 in a stack feed up to 4\.00 A continuously;/,
     );
     expect(answerOf(chosen())).toMatch(/^May be built: K\d ∥ K\d feeds up to \d\.\d\d A continuously\./);
+  });
+
+  it('of a staged supply says over which outputs, and the least that it feeds there', () => {
+    const [, least, at] =
+      /^May be built: valve-bench gives from 0 V to 32 V and feeds at least ([\d.]+) A at each of them; the least is \1 A at ([\d.]+) V/.exec(
+        answerOf(staged()),
+      ) ?? [];
+    const currents = staged().guaranteed.flatMap(({ rising, falling }) => [rising.current, falling.current]);
+    expect(Number(least)).toBeLessThanOrEqual(Math.min(...currents));
+    expect(Number(least)).toBeGreaterThan(Math.min(...currents) - 0.01);
+    expect(Number(at)).toBeGreaterThanOrEqual(0);
+  });
+
+  it('of a switching that shorts a module says by which movements of contacts', () => {
+    const text = plain(stagedThatShorts());
+    expect(answerOf(stagedThatShorts())).toMatch(/^MUST NOT BE BUILT:/);
+    expect(text).toMatch(/FORBIDDEN when S\d [^.]*: /);
+    expect(text).not.toMatch(/May be built|^Parts/m);
   });
 
   it('never writes a recommendation larger than it is', () => {

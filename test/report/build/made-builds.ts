@@ -1,10 +1,13 @@
 import { buildParallel } from '../../../src/arrangement/build-parallel.js';
 import { buildSeries } from '../../../src/arrangement/build-series.js';
+import { buildStages } from '../../../src/arrangement/build-stages.js';
 import type { ParallelBuild, ParallelWish } from '../../../src/arrangement/parallel-build.js';
 import { selectModules } from '../../../src/arrangement/select-modules.js';
 import type { Selection, SelectionWish } from '../../../src/arrangement/selection.js';
 import type { SeriesBuild } from '../../../src/arrangement/series-build.js';
+import type { StagedBuild } from '../../../src/arrangement/staged-build.js';
 import { madeProfile } from '../../arrangement/made-profile.js';
+import { bricks as twelveVolt, valveBench } from '../../arrangement/staged.js';
 
 /** Three 15 V bricks of the nursery, and one whose output is tied to earth. */
 export const bricks = {
@@ -52,4 +55,17 @@ export function chosen(wish: Partial<SelectionWish> = {}): Selection {
       ...wish,
     },
   );
+}
+
+export function staged(): StagedBuild {
+  return buildStages(twelveVolt(), valveBench());
+}
+
+/** Its contacts bridge, so that both sides are joined for a moment. */
+export function stagedThatShorts(): StagedBuild {
+  const { contacts } = valveBench();
+  const bridging = contacts.map((contact) =>
+    contact.kind === 'change-over' ? { ...contact, bridges: true } : contact,
+  );
+  return buildStages(twelveVolt(), valveBench({ contacts: bridging }));
 }
