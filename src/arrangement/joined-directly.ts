@@ -1,6 +1,7 @@
 import { amps, percent } from '../analysis/in-words.js';
 import type { DrawnBranch, WalkCorner } from '../circuit/share-walk.js';
 import type { Amperes } from '../quantity/quantity.js';
+import { usualSag } from './drawn-group.js';
 import { bestPoints, extentOf, mostLoaded, wayUp } from './group-draws.js';
 import { imbalanceAt } from './group-imbalance.js';
 import { doesAtLimit, leavesGroup } from './limit-in-group.js';
@@ -31,13 +32,14 @@ export function joinedDirectly(
   const hog = profiles[most]?.name;
   const imbalance = imbalanceAt(profiles, { drawn }, { load: at, ballast: undefined, currents });
   return {
+    load: at,
     imbalance,
     hog,
     failsAt,
     story: [
       sharingSentence(profiles, { at, currents, hog }),
       ...storyOf(profiles, up.corners),
-      endSentence(profiles, failsAt),
+      endSentence(profiles, { failsAt, isSagged: up.corners.at(-1)?.branch === -1 }),
     ],
   };
 }
@@ -80,9 +82,13 @@ function storyOf(profiles: readonly ModuleProfile[], corners: readonly WalkCorne
   });
 }
 
-function endSentence(profiles: readonly ModuleProfile[], failsAt: Amperes): string {
+function endSentence(
+  profiles: readonly ModuleProfile[],
+  { failsAt, isSagged }: { readonly failsAt: Amperes; readonly isSagged: boolean },
+): string {
   const sum = profiles.reduce((total, { dropout, usable }) => total + (dropout ?? usable).value, 0);
+  const sagged = `What is left could hold the bus only once it had fallen by more than ${percent(usualSag)}, which is no holding. `;
   return failsAt < 0.95 * sum
-    ? `So the group fails at about ${amps(failsAt)}, ${percent(failsAt / sum)} of the ${amps(sum)} that their limits add up to.`
+    ? `${isSagged ? sagged : ''}So the group fails at about ${amps(failsAt)}, ${percent(failsAt / sum)} of the ${amps(sum)} that their limits add up to.`
     : `So the group fails at about ${amps(failsAt)}, when all are at their limits.`;
 }

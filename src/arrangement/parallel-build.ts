@@ -79,7 +79,8 @@ export interface SharingAtLoad {
 
 /** Joined directly. */
 export interface WithoutBallast {
-  /** At the load. */
+  /** Of the imbalance: that of the build, or where they fail if that comes first. */
+  readonly load: Amperes;
   readonly imbalance: Estimate;
   /** Who carries most; undefined where it can't be told. */
   readonly hog: string | undefined;

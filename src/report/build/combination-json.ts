@@ -59,6 +59,7 @@ function parallelAsJson(build: ParallelBuild): object {
       recommended: valueAsJson(sumOfSingles.recommended, 'current'),
     },
     withoutBallast: {
+      load: valueAsJson(withoutBallast.load, 'current'),
       imbalance: estimateAsJson(withoutBallast.imbalance, 'ratio'),
       hog: withoutBallast.hog ?? null,
       failsAt: valueAsJson(withoutBallast.failsAt, 'current'),

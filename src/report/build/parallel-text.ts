@@ -6,7 +6,7 @@ import { roundedDown } from '../../quantity/rounded-down.js';
 import { alignTable } from '../align.js';
 import { printableData } from '../printable.js';
 import type { Style } from '../style.js';
-import { loadInWords } from './brief.js';
+import { brief, loadInWords } from './brief.js';
 import { ballastText } from './ballast-text.js';
 import { estimateCells, estimateInWords } from './estimate-text.js';
 import { headingText } from './heading-text.js';
@@ -104,7 +104,11 @@ function withoutBallastText(build: ParallelBuild, style: Style): string {
   if (build.ballast.kind === 'none') return '';
   const { withoutBallast, load } = build;
   const imbalance = estimateInWords(withoutBallast.imbalance, 'ratio');
-  const lines = [`At ${loadInWords(load)} the imbalance would be ${imbalance}`, ...withoutBallast.story];
+  const at =
+    withoutBallast.load < load.current
+      ? `Just before they fail, at ${brief(withoutBallast.load, 'current')},`
+      : `At ${loadInWords(load)}`;
+  const lines = [`${at} the imbalance would be ${imbalance}`, ...withoutBallast.story];
   return section('Without ballast', bullets(lines), style);
 }
 

@@ -13,6 +13,7 @@ import { table } from '../page/table.js';
 import { banner } from './banner.js';
 import { circuitSection } from './circuit.js';
 import { currentsChart, sharesChart, voltageChart } from './parallel-charts.js';
+import { loadText } from './load-text.js';
 import { cautionsSection, isRefused, partsSection } from './parts.js';
 import { concernsSection, modulesSection, sourcesSection } from './records.js';
 
@@ -45,19 +46,17 @@ function answer(build: ParallelBuild): readonly string[] {
   const { standing, recommended, load, firstToSaturate: first } = build;
   if (standing.kind !== 'may-be-built') return [];
   const asked =
-    load.from === 'asked-for' && load.current > recommended.current
-      ? [`${brief(load.current, 'current')} is asked for`]
-      : [];
+    load.from === 'asked-for' && load.current > recommended.current ? [`${loadText(load)} is asked for`] : [];
   return [
     `Together they feed up to ${roundedDown(recommended.current, 'current')} continuously`,
     ...asked,
-    `${recommended.setBy}. ${first.module} reaches its limit first, at ${estimateInWords(first.load, 'current')}`,
+    `What sets it: ${recommended.setBy}. ${first.module} reaches its limit first, at ${estimateInWords(first.load, 'current')}`,
   ];
 }
 
 function numbers(build: ParallelBuild): Markup {
   const { atLoad, load, usable, recommended, sumOfSingles, firstToSaturate: first } = build;
-  const at = `at ${brief(load.current, 'current')}`;
+  const at = `at ${loadText(load)}`;
   const row = (what: string, estimate: Estimate, dimension: Dimension, note = ''): string[] => [
     what,
     ...estimateCells(estimate, dimension),
@@ -82,7 +81,7 @@ function numbers(build: ParallelBuild): Markup {
                 'Recommended, continuously',
                 roundedDown(recommended.current, 'current'),
                 '',
-                sentence(recommended.setBy),
+                sentence(`Set by ${recommended.setBy}`),
               ],
             ]),
         row('Usable', usable, 'current', notTheSum(sumOfSingles.usable)),
@@ -145,7 +144,7 @@ function sharing(build: ParallelBuild): Markup {
   return section(
     'How they share the load',
     table(
-      `At ${brief(load.current, 'current')}, ${from}.`,
+      `At ${loadText(load)}, ${from}.`,
       columns,
       modules.map(({ name }, index) => [
         name,
@@ -172,7 +171,7 @@ function withoutBallast({ ballast, withoutBallast: without, load }: ParallelBuil
   return section(
     'Without ballast',
     bullets([
-      `At ${brief(load.current, 'current')} the imbalance would be ${estimateInWords(without.imbalance, 'ratio')}${hog}.`,
+      `${without.load < load.current ? 'Just before they fail, at' : 'At'} ${brief(Math.min(without.load, load.current), 'current')} the imbalance would be ${estimateInWords(without.imbalance, 'ratio')}${hog}.`,
       `The group would fail as a whole at ${brief(without.failsAt, 'current')}.`,
       ...without.story.map(sentence),
     ]),
@@ -190,7 +189,7 @@ function failures({ failures: each, load }: ParallelBuild): Markup | undefined {
   return section(
     'When one fails or is switched off',
     table(
-      `What the others can do then; the load is ${brief(load.current, 'current')}.`,
+      `What the others can do then; the load is ${loadText(load)}.`,
       [
         { heading: 'Without', as: 'name' },
         { heading: 'The others' },

@@ -85,6 +85,7 @@ export function madeParallel(
     recommended: { current: load, setBy: `${names.at(-1) ?? ''} at its recommended 4 A sets it` },
     sumOfSingles: { usable: 5.1 * names.length, recommended: 4 * names.length },
     withoutBallast: {
+      load,
       imbalance: about(1.4, 0.1),
       hog: names.at(-1),
       failsAt: 6.1,
