@@ -24,7 +24,8 @@ const mostGroups = 2000;
  * whose worst group shares best. All ballasts are of one value, the smallest that does for all groups (or the one
  * that was given). The way is found exactly, see `bestPackings`, and the same drawer in another order gives the same.
  *
- * The next best differs in which modules stand side by side; where they stand alone, in which are taken.
+ * The next best is of the same voltage, and differs in which modules stand side by side; where they stand alone, in
+ * which are taken.
  *
  * On a shared machine of two cores 20 modules in pairs take up to 4 s, 18 in threes 2 s, 16 in fours 5 s. What is larger
  * is refused: at once where there are more than `mostModules` or `mostGroups`, or after about ten seconds where so
@@ -38,7 +39,8 @@ export function selectModules(
   requireSense(wish);
   const drawer = sortedDrawer(found, wish);
   const each = drawer.byVoltage.map(({ modules }) => waysOf(modules, wish));
-  const [best, next] = inOrder(each.flatMap(({ spreads }) => spreads));
+  const [of] = each.toSorted((one, other) => better(one.best, other.best));
+  const { best, next } = of ?? { best: undefined, next: undefined };
   const considered = each.reduce((sum, { considered: ways }) => sum + ways, 0);
   const common = {
     kind: 'selection' as const,
@@ -105,10 +107,10 @@ function requireSense(wish: SelectionWish): void {
 function waysOf(
   modules: readonly ModuleProfile[],
   wish: SelectionWish,
-): { readonly spreads: readonly Spread[]; readonly considered: number } {
+): { readonly best: Spread | undefined; readonly next: Spread | undefined; readonly considered: number } {
   const { group, stack, supplies } = wish;
   const count = stack * supplies;
-  if (modules.length < group * count) return { spreads: [], considered: 0 };
+  if (modules.length < group * count) return { best: undefined, next: undefined, considered: 0 };
   const groups = choose(modules.length, group);
   if (modules.length > mostModules || groups > mostGroups) {
     throw new UnfitWishError(
@@ -135,14 +137,17 @@ function waysOf(
     isBuildable: (packing) => spreadOf(packing) !== undefined,
   });
   return {
-    spreads: [best, next].flatMap((packing) => (packing && spreadOf(packing)) ?? []),
+    best: best && spreadOf(best),
+    next: next && spreadOf(next),
     considered: countWays(modules.length, group, count),
   };
 }
 
-/** The better ones first; of equal ones those of the lower voltage. */
-function inOrder(spreads: readonly Spread[]): readonly Spread[] {
-  return spreads.toSorted((one, other) => (isBetter(one, other) ? -1 : isBetter(other, one) ? 1 : 0));
+/** For sorting, the better one first; what there is none of comes last. */
+function better(one: Spread | undefined, other: Spread | undefined): number {
+  if (one === undefined || other === undefined)
+    return Number(one === undefined) - Number(other === undefined);
+  return Number(isBetter(other, one)) - Number(isBetter(one, other));
 }
 
 /** Ways to take so many groups of a size out of so many modules, in whatever order. */

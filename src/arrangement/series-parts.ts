@@ -1,5 +1,5 @@
 import { amps, ratedAmperes } from '../analysis/in-words.js';
-import { formatExact } from '../quantity/format-quantity.js';
+import { formatExact, formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import type { Part } from './build.js';
 import { moduleParts } from './module-parts.js';
@@ -19,7 +19,7 @@ export function seriesParts(
       const alike = marked.filter(({ diode }) => ratingOf(diode) === rating);
       return {
         marks: alike.map(({ mark }) => mark),
-        what: 'rectifier diode across the output of each module, cathode to the plus',
+        what: "rectifier diode across its module's output, cathode to the plus",
         ratings: rating.split(separator),
         why: whyOf(alike.map(({ diode }) => diode)),
       };
@@ -40,7 +40,7 @@ function whyOf(diodes: readonly ReverseDiode[]): string {
   const pushed = diodes.some(({ bound }) => bound === 'least')
     ? `${amps(most)} or more (not all records show how much more)`
     : `up to ${amps(most)}`;
-  return `when a module fails, the others push ${pushed} through its diode; without it the failed output is driven backwards by up to ${volts(voltage)}. That makes up to ${formatExact(heat, 'power').value} W of heat until the load is off: give it a heat sink, or a thermal switch that takes the load off`;
+  return `when a module fails, the others push ${pushed} through its diode; without it the failed output is driven backwards by up to ${volts(voltage)}. That makes up to ${formatQuantity(heat, 'power', { significant: 2 })} of heat until the load is off: give it a heat sink, or a thermal switch that takes the load off`;
 }
 
 function volts(voltage: Volts): string {
