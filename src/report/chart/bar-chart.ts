@@ -43,11 +43,16 @@ export function barChart(chart: BarChart): Markup {
     chart,
     frame,
     verticalMarks(marks, frame),
-    bars.map((bar, index) => drawn(bar, top + index * rowHeight, frame)),
+    bars.map((bar, index) => drawn(bar, top + index * rowHeight, frame, marks.length > 0)),
   );
 }
 
-function drawn({ from, to, name, says, look = 0 }: Bar, top: number, { x }: Frame): Markup {
+function drawn(
+  { from, to, name, says, look = 0 }: Bar,
+  top: number,
+  { x }: Frame,
+  isCrossed: boolean,
+): Markup {
   const start = x.at(Math.min(from, to));
   const length = Math.max(2, x.at(Math.max(from, to)) - start);
   const shown = cutToWidth(name, Math.max(60, width - textWidth(says) - 20));
@@ -60,7 +65,7 @@ function drawn({ from, to, name, says, look = 0 }: Bar, top: number, { x }: Fram
     element('rect', { class: 'bar', x: start, y: top + lineHeight + 4, width: length, height: barHeight }),
     element(
       'text',
-      { class: 'halo', x: place, y: top + lineHeight },
+      { class: isCrossed ? 'halo' : undefined, x: place, y: top + lineHeight },
       element('tspan', { class: 'name' }, shown),
       element('tspan', { dx: 8 }, says),
     ),

@@ -101,7 +101,8 @@ function rail(y: number, outer: number, places: readonly number[]): readonly Pie
 /** A module with what belongs to it: across its output, and above it in series. */
 function column(name: string, circuit: Circuit, marks: PartMarks, surroundings: Surroundings): Branch {
   const isEarthed = surroundings.earthed?.has(name) ?? false;
-  const below = isEarthed ? lead + 18 : lead;
+  // All alike, so that modules side by side stand in one line.
+  const below = (surroundings.earthed?.size ?? 0) > 0 ? lead + 18 : lead;
   const { height, width } = sizes.module;
   const plus = -below - height;
   const plate = surroundings.plate?.(name) ?? '';

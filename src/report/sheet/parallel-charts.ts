@@ -7,6 +7,7 @@ import { brief } from '../build/brief.js';
 import { estimateInWords } from '../build/estimate-text.js';
 import type { Markup } from '../page/markup.js';
 import { figure } from './figure.js';
+import { loadText } from './load-text.js';
 import { isRefused } from './parts.js';
 
 const load = { label: 'Load of the group', dimension: 'current' } as const;
@@ -38,7 +39,7 @@ export function sharesChart(build: ParallelBuild): Markup {
     lineChart({
       id: 'shares',
       title,
-      description: `Each module's part of the load over the load. At ${brief(build.load.current, 'current')}: ${said.join(', ')}.`,
+      description: `Each module's part of the load over the load. At ${loadText(build.load)}: ${said.join(', ')}.`,
       x: load,
       y: { label: 'Share of the load', dimension: 'ratio', ...shareRange(lines) },
       lines,
@@ -89,7 +90,7 @@ export function voltageChart(build: ParallelBuild): Markup {
     lineChart({
       id: 'bus',
       title,
-      description: `Its voltage over its load: ${estimateInWords(atLoad.busVoltage, 'voltage')} at ${brief(build.load.current, 'current')}.`,
+      description: `Its voltage over its load: ${estimateInWords(atLoad.busVoltage, 'voltage')} at ${loadText(build.load)}.`,
       x: load,
       y: { label: 'Voltage', dimension: 'voltage' },
       lines: [lineOf('group', sharing.loads, sharing.busVoltage)],
@@ -111,9 +112,7 @@ function marksOf(build: ParallelBuild): readonly VerticalMark[] {
       ? []
       : [{ at: recommended.current, label: `recommended ${roundedDown(recommended.current, 'current')}` }]),
     { at: usable.value, label: `usable ${brief(usable.value, 'current')}` },
-    ...(at.from === 'asked-for'
-      ? [{ at: at.current, label: `asked for ${brief(at.current, 'current')}` }]
-      : []),
+    ...(at.from === 'asked-for' ? [{ at: at.current, label: `asked for ${loadText(at)}` }] : []),
   ].filter((mark) => mark.at <= most * 1.001);
 }
 

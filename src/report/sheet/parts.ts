@@ -1,5 +1,7 @@
+import { type Circuit, modulesOf } from '../../arrangement/build.js';
 import { type AnyBuild, outcomeOf } from '../build/any-build.js';
 import { sentence } from '../build/prose.js';
+import { partMarks } from '../diagram/part-marks.js';
 import { element, type Markup } from '../page/markup.js';
 import { bullets, section } from '../page/page.js';
 import { table } from '../page/table.js';
@@ -11,7 +13,7 @@ export function partsSection(build: AnyBuild): Markup | undefined {
     'Parts',
     provisional(build),
     table(
-      'Each mark is that of the circuit; ratings are the least to buy.',
+      'Marks are those of the circuit; ratings are the least to buy.',
       [
         { heading: 'Mark', as: 'name' },
         { heading: 'What' },
@@ -20,12 +22,28 @@ export function partsSection(build: AnyBuild): Markup | undefined {
       ],
       build.parts.map(({ marks, what, ratings, why }) => [
         marks.join(', '),
-        what,
+        isDrawn(build, marks) ? what : [what, element('span', { class: 'soft' }, ' (not drawn)')],
         ratings.map((rating, index) => [index > 0 && element('br', {}), rating]),
         sentence(why),
       ]),
     ),
   );
+}
+
+/** Whether a part stands in the circuit; what is optional does not. */
+function isDrawn(build: AnyBuild, marks: readonly string[]): boolean {
+  const drawn = new Set(circuitsOf(build).flatMap(marksOf));
+  return marks.every((mark) => drawn.has(mark));
+}
+
+function circuitsOf(build: AnyBuild): readonly Circuit[] {
+  if (build.kind === 'stages') return build.arrangements.map(({ circuit }) => circuit);
+  return build.circuit === undefined ? [] : [build.circuit];
+}
+
+function marksOf(circuit: Circuit): readonly string[] {
+  const { ballast, reverse, or } = partMarks(circuit);
+  return [...modulesOf(circuit.form), ...ballast.values(), ...reverse.values(), ...or.values()];
 }
 
 export function cautionsSection({ cautions }: AnyBuild): Markup | undefined {

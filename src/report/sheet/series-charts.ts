@@ -6,6 +6,7 @@ import { barChart } from '../chart/bar-chart.js';
 import { lineChart } from '../chart/line-chart.js';
 import type { Markup } from '../page/markup.js';
 import { figure } from './figure.js';
+import { loadText } from './load-text.js';
 import { isRefused } from './parts.js';
 
 /** Beyond which a direct voltage is no longer safe to touch (ES1 of IEC 62368-1). */
@@ -20,7 +21,7 @@ export function curveChart(build: SeriesBuild): Markup {
     lineChart({
       id: 'curve',
       title,
-      description: `${estimateInWords(openVoltage, 'voltage')} at no load, ${estimateInWords(voltageAtLoad, 'voltage')} at ${brief(load.current, 'current')}.`,
+      description: `${estimateInWords(openVoltage, 'voltage')} at no load, ${estimateInWords(voltageAtLoad, 'voltage')} at ${loadText(load)}.`,
       x: { label: 'Load of the string', dimension: 'current' },
       y: { label: 'Voltage', dimension: 'voltage' },
       lines: [

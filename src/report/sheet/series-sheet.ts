@@ -11,6 +11,7 @@ import { bullets, section, type Sheet } from '../page/page.js';
 import { table } from '../page/table.js';
 import { banner } from './banner.js';
 import { circuitSection } from './circuit.js';
+import { loadText } from './load-text.js';
 import { cautionsSection, isRefused, partsSection } from './parts.js';
 import { concernsSection, modulesSection, sourcesSection } from './records.js';
 import { curveChart, railsChart } from './series-charts.js';
@@ -46,13 +47,11 @@ function answer({
 }: SeriesBuild): readonly string[] {
   if (standing.kind !== 'may-be-built') return [];
   const asked =
-    load.from === 'asked-for' && load.current > recommended.current
-      ? [`${brief(load.current, 'current')} is asked for`]
-      : [];
+    load.from === 'asked-for' && load.current > recommended.current ? [`${loadText(load)} is asked for`] : [];
   return [
     `The string feeds up to ${roundedDown(recommended.current, 'current')} continuously, at ${estimateInWords(voltageAtLoad, 'voltage')}`,
     ...asked,
-    recommended.setBy,
+    `What sets it: ${recommended.setBy}`,
     ...(beyondTouchable ? ['It can be above 60 V DC: not safe to touch (ES1 of IEC 62368-1)'] : []),
   ];
 }
@@ -85,12 +84,12 @@ function numbers(build: SeriesBuild): Markup {
                 'Recommended, continuously',
                 roundedDown(recommended.current, 'current'),
                 '',
-                sentence(recommended.setBy),
+                sentence(`Set by ${recommended.setBy}`),
               ],
             ]),
         row('Usable', usable, 'current', who),
         row('Voltage at no load', openVoltage, 'voltage', touch(build)),
-        row(`Voltage at ${brief(load.current, 'current')}`, voltageAtLoad, 'voltage'),
+        row(`Voltage at ${loadText(load)}`, voltageAtLoad, 'voltage'),
       ],
     ),
   );

@@ -1,0 +1,201 @@
+import { existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { pathToFileURL } from 'node:url';
+import { type Browser, chromium, type Page } from 'playwright-core';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { buildPage } from '../../src/report/page/build-page.js';
+import { madeParallel, madeSelection, madeSeries, madeStages } from '../report/sheet/made-builds.js';
+
+const executablePath = '/usr/bin/chromium';
+const made = { program: 'railproof test', date: new Date('2026-12-02T03:30:00Z') };
+const many = ['K1', 'K2', 'K3', 'K4', 'K5', 'K6', 'K7', 'K8'];
+const hostile = '<script>document.title="gone"</script><img src=x onerror=alert(1)>" onload="alert(1)';
+
+const sheets = {
+  parallel: { build: madeParallel(), title: 'K1, K2 and K3 in parallel', drawings: 4 },
+  'parallel of eight': {
+    build: madeParallel({}, many),
+    title: 'K1, K2, K3, K4, K5, K6, K7 and K8 in parallel',
+    drawings: 4,
+  },
+  series: { build: madeSeries(), title: 'K1, K2 and K3 in series', drawings: 3 },
+  'series of five': {
+    build: madeSeries({}, many.slice(0, 5)),
+    title: 'K1, K2, K3, K4 and K5 in series',
+    drawings: 3,
+  },
+  stages: { build: madeStages(), title: 'valves: adjustable supply for the valve bench', drawings: 5 },
+  selection: { build: madeSelection(), title: '2 supplies: 2 groups of 2 each in a stack', drawings: 2 },
+} as const;
+const rows = Object.entries(sheets).map(([name, sheet]) => [name, sheet] as const);
+
+// Where chromium is missing nothing can be looked at; CI installs it, and there nothing is skipped.
+const isMissing = !existsSync(executablePath) && process.env['CI'] === undefined;
+
+describe.skipIf(isMissing)('a build sheet in a browser (needs /usr/bin/chromium)', () => {
+  let browser: Browser;
+  const folder = mkdtempSync(join(tmpdir(), 'railproof-sheets-'));
+
+  beforeAll(async () => {
+    // Root, as CI runs, has no sandbox of its own to offer.
+    browser = await chromium.launch({ executablePath, args: ['--no-sandbox'] });
+  });
+  afterAll(async () => {
+    await browser.close();
+    rmSync(folder, { recursive: true });
+  });
+
+  describe.each(rows)('of %s', (name, sheet) => {
+    let page: Page;
+    let heard: readonly string[];
+
+    beforeAll(async () => {
+      ({ page, heard } = await opened(name, buildPage(sheet.build, made)));
+    });
+    afterAll(() => page.close());
+
+    it('opens from a file, asks for nothing else and has nothing to complain about', async () => {
+      expect(await page.title()).toBe(`${sheet.title} · railproof`);
+      expect(await page.locator('h1').innerText()).toBe(sheet.title);
+      expect(heard).toEqual([pathToFileURL(join(folder, `${name}.html`)).href]);
+    });
+
+    it('has marks in each drawing, and a name and a description for it', async () => {
+      const drawings = await page.getByRole('img').all();
+      expect(drawings).toHaveLength(sheet.drawings);
+      for (const drawing of drawings) {
+        const title = await drawing.locator('> title').textContent();
+        const description = await drawing.locator('> desc').textContent();
+        expect(description?.length).toBeGreaterThan(10);
+        const named = page.getByRole('img', { name: `${title ?? ''} ${description ?? ''}`, exact: true });
+        expect(await named.count()).toBe(1);
+      }
+      for (const marks of await page.evaluate<number[]>(marksOfDrawings)) expect(marks).toBeGreaterThan(2);
+    });
+
+    it('has no two texts of a drawing over each other, and none outside of it', async () => {
+      expect(await textsInTheWay(page)).toEqual([]);
+    });
+
+    it('does not scroll sideways at 360 px', async () => {
+      await page.setViewportSize({ width: 360, height: 800 });
+      const widths = await page.evaluate<number[]>(
+        '[document.documentElement.scrollWidth, document.documentElement.clientWidth]',
+      );
+      expect(widths).toEqual([360, 360]);
+      expect(await textsInTheWay(page)).toEqual([]);
+    });
+  });
+
+  it('shows a hostile name and a hostile record as text', async () => {
+    const build = madeParallel({}, [hostile, 'K2']);
+    const concerns = [{ ...build.concerns[0], run: hostile, text: hostile }] as typeof build.concerns;
+    const { page, heard } = await opened('hostile', buildPage({ ...build, concerns }, made));
+    expect(heard).toHaveLength(1);
+    expect(await page.title()).toContain(hostile);
+    expect(await page.locator('script, img, [onload], [onerror]').count()).toBe(0);
+    expect(await page.locator('th', { hasText: hostile }).count()).toBeGreaterThan(0);
+    expect(await textsInTheWay(page)).toEqual([]);
+    await page.close();
+  });
+
+  it('could run no script even if one got in', async () => {
+    const text = buildPage(madeParallel(), made).replace(
+      '</main>',
+      '<script>document.title = "ran"</script></main>',
+    );
+    const { page, heard } = await opened('with-script', text);
+    expect(await page.title()).not.toBe('ran');
+    expect(heard.join('\n')).toContain('Content Security Policy');
+    await page.close();
+  });
+
+  it('of stages prints on A4, every page of it', async () => {
+    const { page } = await opened('print', buildPage(madeStages(), made));
+    const pdf = (await page.pdf({ preferCSSPageSize: true })).toString('latin1');
+    const boxes = [...pdf.matchAll(/\/MediaBox \[([^\]]*)\]/g)].map(([, box]) =>
+      box?.trim().split(/\s+/).map(Number),
+    );
+    expect(boxes.length).toBeGreaterThan(2);
+    // 210 mm by 297 mm (ISO 216) in points, to the rounding of the browser.
+    for (const box of boxes) {
+      expect(Math.abs((box?.[2] ?? NaN) - 595.28)).toBeLessThan(1);
+      expect(Math.abs((box?.[3] ?? NaN) - 841.89)).toBeLessThan(1);
+    }
+    await page.close();
+  });
+
+  it('prints dark on white though the screen is dark', async () => {
+    const { page } = await opened('dark', buildPage(madeSeries(), made));
+    await page.emulateMedia({ colorScheme: 'dark' });
+    const ground = (): Promise<string> =>
+      page.evaluate<string>('getComputedStyle(document.body).backgroundColor');
+    expect(await ground()).toBe('rgb(20, 24, 26)');
+    await page.emulateMedia({ colorScheme: 'dark', media: 'print' });
+    expect(await ground()).toBe('rgb(255, 255, 255)');
+    await page.close();
+  });
+
+  /** The page, and all that it asked for or said. */
+  async function opened(name: string, text: string): Promise<{ page: Page; heard: string[] }> {
+    const file = join(folder, `${name}.html`);
+    writeFileSync(file, text);
+    const page = await browser.newPage({ viewport: { width: 1000, height: 800 } });
+    const heard: string[] = [];
+    page.on('console', (message) => heard.push(message.text()));
+    page.on('pageerror', (error) => heard.push(error.message));
+    page.on('request', (request) => heard.push(request.url()));
+    page.on('dialog', (dialog) => heard.push(dialog.message()));
+    await page.goto(pathToFileURL(file).href);
+    return { page, heard };
+  }
+});
+
+interface Box {
+  readonly said: string;
+  readonly left: number;
+  readonly top: number;
+  readonly right: number;
+  readonly bottom: number;
+}
+
+// What runs in the page is text, as the types of a browser are none of ours.
+const boxesOfDrawings = `[...document.querySelectorAll('svg[role=img]')].map((svg) =>
+  [svg, ...svg.querySelectorAll('text')].map((each) => {
+    const { left, top, right, bottom } = each.getBoundingClientRect();
+    return { said: each.textContent, left, top, right, bottom };
+  }))`;
+const marksOfDrawings = `[...document.querySelectorAll('svg[role=img]')].map((svg) =>
+  [...svg.querySelectorAll('.line, .band, .bar, .spot, .heat, .contour, .box, .resistor, .symbol')].filter((mark) => {
+    const { width, height } = mark.getBoundingClientRect();
+    return width + height > 0;
+  }).length)`;
+
+/** Pairs of texts of one drawing that overlap, and texts that reach out of it. */
+async function textsInTheWay(page: Page): Promise<readonly string[]> {
+  const drawings = await page.evaluate<Box[][]>(boxesOfDrawings);
+  return drawings.flatMap(([whole, ...texts]) => [
+    ...texts.filter((text) => whole === undefined || !holds(whole, text)).map(({ said }) => `out: ${said}`),
+    ...texts.flatMap((one, index) =>
+      texts
+        .slice(index + 1)
+        .filter((other) => overlap(one, other))
+        .map((other) => `${one.said} | ${other.said}`),
+    ),
+  ]);
+}
+
+function holds(whole: Box, { left, top, right, bottom }: Box): boolean {
+  return left > whole.left - 1 && right < whole.right + 1 && top > whole.top - 1 && bottom < whole.bottom + 1;
+}
+
+/** Boxes of text are higher than its letters: lines may touch by a pixel or two. */
+function overlap(one: Box, other: Box): boolean {
+  return (
+    one.left < other.right - 1 &&
+    other.left < one.right - 1 &&
+    one.top < other.bottom - 3 &&
+    other.top < one.bottom - 3
+  );
+}
