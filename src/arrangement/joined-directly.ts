@@ -1,4 +1,4 @@
-import { amps, percent } from '../analysis/in-words.js';
+import { amps, givenPercent, percent } from '../analysis/in-words.js';
 import type { DrawnBranch, WalkCorner } from '../circuit/share-walk.js';
 import type { Amperes } from '../quantity/quantity.js';
 import { usualSag } from './drawn-group.js';
@@ -87,7 +87,7 @@ function endSentence(
   { failsAt, isSagged }: { readonly failsAt: Amperes; readonly isSagged: boolean },
 ): string {
   const sum = profiles.reduce((total, { dropout, usable }) => total + (dropout ?? usable).value, 0);
-  const sagged = `What is left could hold the bus only once it had fallen by more than ${percent(usualSag)}, which is no holding. `;
+  const sagged = `What is left could hold the bus only once it had fallen by more than ${givenPercent(usualSag)}, which is no holding. `;
   return failsAt < 0.95 * sum
     ? `${isSagged ? sagged : ''}So the group fails at about ${amps(failsAt)}, ${percent(failsAt / sum)} of the ${amps(sum)} that their limits add up to.`
     : `So the group fails at about ${amps(failsAt)}, when all are at their limits.`;

@@ -216,6 +216,23 @@ describe('without ballast', patience, () => {
     expect(told.join(' ')).toMatch(/nobody has measured: reckon with it leaving/);
   });
 
+  it('is told where it fails, if that comes before the load', () => {
+    const high = madeProfile('K1', { openCircuit: 15.33 });
+    const { load, failsAt } = buildParallel([high, K2], given(0.2, { load: 7 })).withoutBallast;
+    expect(failsAt).toBeLessThan(6);
+    expect(load).toBeLessThan(failsAt);
+    expect(story([K1, K2]).load).toBe(5);
+  });
+
+  it('a bus that would have to fall by volts first is held by nobody', () => {
+    const W1 = madeProfile('W1', { openCircuit: 12.1, dropout: 6, label: { voltage: 12, current: 2.5 } });
+    const { failsAt, story: told } = story([K1, W1]);
+    expect(failsAt).toBeCloseTo(5.3, 1);
+    expect(told.at(-1)).toMatch(
+      /^What is left could hold the bus only once it had fallen by more than 5 %/,
+    );
+  });
+
   it('nobody is called the hog where the records can’t tell', () => {
     const { hog, story: told } = story([madeProfile('K1'), madeProfile('K2')]);
     expect(hog).toBeUndefined();
