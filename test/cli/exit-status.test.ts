@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { statusOfOutcome } from '../../src/cli/exit-status.js';
+import { statusOfBuild, statusOfOutcome } from '../../src/cli/exit-status.js';
 import { exitCodeOf } from '../../src/errors/railproof-error.js';
 import { GuardTrippedError } from '../../src/bench/bench-error.js';
 import { RecordWriteError } from '../../src/record/record-error.js';
@@ -12,6 +12,15 @@ describe('the exit status', () => {
     ['undecided', 2],
   ] as const)('of %s is %i', (outcome, status) => {
     expect(statusOfOutcome(outcome)).toBe(status);
+  });
+
+  it.each([
+    ['may-be-built', 0],
+    ['too-little', 1],
+    ['must-not-be-built', 1],
+    ['cannot-tell', 2],
+  ] as const)('of a build that comes to %s is %i', (outcome, status) => {
+    expect(statusOfBuild(outcome)).toBe(status);
   });
 
   it('of an error is its own, and of what nobody foresaw 70', () => {

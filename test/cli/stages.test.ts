@@ -101,7 +101,8 @@ describe('check of a stages file', () => {
 });
 
 it('the stages file that the README shows is right, and comes to the same as the one it links to', async () => {
-  const shown = /```yaml\n(railproof: stages 1\n[\s\S]*?)```/.exec(readFileSync('README.md', 'utf8'))?.[1] ?? '';
+  const shown =
+    /```yaml\n(railproof: stages 1\n[\s\S]*?)```/.exec(readFileSync('README.md', 'utf8'))?.[1] ?? '';
   const copied = changed('readme', () => shown.replaceAll('../runs/', `${resolve('fixtures/runs')}/`));
   const [ours, linked] = [await railproof('stages', copied), await railproof('stages', example)];
   expect(ours.stderr).toBe('');

@@ -21,14 +21,16 @@ function read(build: AnyBuild): { readonly [key: string]: Json } {
   return JSON.parse(jsonText(buildAsJson(build))) as { readonly [key: string]: Json };
 }
 
+const [group, stages, shorting] = [pair(), staged(), stagedThatShorts()] as const;
+
 const builds: readonly (readonly [string, AnyBuild])[] = [
-  ['a group', pair()],
+  ['a group', group],
   ['a refused stack', stringWithBonded()],
   ['a stack', string()],
   ['a selection', chosen()],
   ['a selection out of too few', chosen({ supplies: 5 })],
-  ['a staged supply', staged()],
-  ['a staged supply that shorts a module', stagedThatShorts()],
+  ['a staged supply', stages],
+  ['a staged supply that shorts a module', shorting],
 ];
 
 describe('the JSON of what may be built', () => {
@@ -48,7 +50,7 @@ describe('the JSON of what may be built', () => {
   });
 
   it('says of each number of a module which record it was taken from', () => {
-    const [module] = read(pair())['modules'] as readonly Json[];
+    const [module] = read(group)['modules'] as readonly Json[];
     const from = {
       record: '20261130T091500Z-K1-real-limit',
       procedure: 'real-limit',
@@ -116,7 +118,7 @@ describe('the JSON of what may be built', () => {
   });
 
   it('gives a staged supply its switch-overs, what it guarantees, and its heat', () => {
-    const json = read(staged());
+    const json = read(stages);
     expect(json).toMatchObject({
       format: 'railproof/staged-supply 1',
       name: 'valve-bench',
@@ -141,7 +143,7 @@ describe('the JSON of what may be built', () => {
     expect(watts).toHaveLength(output.values.length);
     for (const row of watts) expect(row).toHaveLength(current.values.length);
     expect(Math.max(...watts.flat().map((each) => each ?? 0))).toBeLessThanOrEqual(25 + 1e-6);
-    expect(read(stagedThatShorts())).toMatchObject({ outcome: 'must-not-be-built', parts: [] });
+    expect(read(shorting)).toMatchObject({ outcome: 'must-not-be-built', parts: [] });
   });
 
   it('gives null for an interval without an end', () => {

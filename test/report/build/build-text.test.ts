@@ -52,35 +52,40 @@ describe('the text of what may be built', () => {
   });
 
   it('says first that it may be built, through what, and for how much', () => {
-    expect(answerOf(pair())).toMatch(
+    expect(answerOf(builds.parallel)).toMatch(
       /^May be built: K1 and K2 side by side through 51 mΩ each feed up to \d\.\d\d A continuously\./,
     );
-    expect(answerOf(string())).toMatch(
+    expect(answerOf(builds.series)).toMatch(
       /^May be built: K1, K2 and K3 in a stack feed up to 4\.00 A continuously;/,
     );
-    expect(answerOf(chosen())).toMatch(/^May be built: K\d ∥ K\d feeds up to \d\.\d\d A continuously\./);
+    expect(answerOf(builds.selection)).toMatch(
+      /^May be built: K\d ∥ K\d feeds up to \d\.\d\d A continuously\./,
+    );
   });
 
   it('of a staged supply says over which outputs, and the least that it feeds there', () => {
     const [, least, at] =
       /^May be built: valve-bench gives from 0 V to 32 V and feeds at least ([\d.]+) A at each of them; the least is \1 A at ([\d.]+) V/.exec(
-        answerOf(staged()),
+        answerOf(builds.stages),
       ) ?? [];
-    const currents = staged().guaranteed.flatMap(({ rising, falling }) => [rising.current, falling.current]);
+    const currents = builds.stages.guaranteed.flatMap(({ rising, falling }) => [
+      rising.current,
+      falling.current,
+    ]);
     expect(Number(least)).toBeLessThanOrEqual(Math.min(...currents));
     expect(Number(least)).toBeGreaterThan(Math.min(...currents) - 0.01);
     expect(Number(at)).toBeGreaterThanOrEqual(0);
   });
 
   it('of a switching that shorts a module says by which movements of contacts', () => {
-    const text = plain(stagedThatShorts());
-    expect(answerOf(stagedThatShorts())).toMatch(/^MUST NOT BE BUILT:/);
+    const text = plain(builds['stages-refused']);
+    expect(answerOf(builds['stages-refused'])).toMatch(/^MUST NOT BE BUILT:/);
     expect(text).toMatch(/FORBIDDEN when S\d [^.]*: /);
     expect(text).not.toMatch(/May be built|^Parts/m);
   });
 
   it('never writes a recommendation larger than it is', () => {
-    for (const build of [pair(), string()]) {
+    for (const build of [builds.parallel, builds.series]) {
       const [, said] = /feed up to ([\d.]+) A/.exec(answerOf(build)) ?? [];
       expect(Number(said)).toBeLessThanOrEqual(build.recommended.current);
       expect(Number(said)).toBeGreaterThan(build.recommended.current - 0.01);
@@ -88,26 +93,32 @@ describe('the text of what may be built', () => {
   });
 
   it('of what must not be built says so first, why, and lists no parts', () => {
-    for (const build of [stringWithBonded(), pairThatNothingHelps()]) {
+    for (const build of [builds['series-refused'], builds['parallel-refused']]) {
       expect(answerOf(build)).toMatch(/^MUST NOT BE BUILT: /);
       expect(plain(build)).not.toMatch(/May be built|^Parts|^ {2}recommended/m);
     }
-    expect(answerOf(stringWithBonded())).toContain('The output of K9 is bonded to earth inside');
+    expect(answerOf(builds['series-refused'])).toContain('The output of K9 is bonded to earth inside');
   });
 
   it('of what can not be told never says that it may be built, and lists no parts to buy at once', () => {
-    const text = plain(stringUnproved());
-    expect(answerOf(stringUnproved())).toMatch(/^CANNOT TELL: How the output of K8 stands to earth/);
+    const text = plain(builds['series-unproved']);
+    expect(answerOf(builds['series-unproved'])).toMatch(/^CANNOT TELL: How the output of K8 stands to earth/);
     expect(text).not.toContain('May be built');
     expect(text).not.toMatch(/^Parts$/m);
   });
 
   it('of a load beyond what is recommended never says that it may be built', () => {
-    for (const build of [pair({ load: 9 }), string(9)]) {
+    for (const build of [builds['parallel-too-much'], string(9)]) {
       expect(answerOf(build)).toMatch(/^(MUST NOT BE BUILT|TOO LITTLE):/);
       expect(plain(build)).not.toContain('May be built');
       expect(answerOf(build)).toContain('asked for');
     }
+  });
+
+  it('of a load that a builder let pass beyond what it recommends says that it is too little', () => {
+    const build: AnyBuild = { ...builds.parallel, load: { current: 99, from: 'asked-for' } };
+    expect(answerOf(build)).toMatch(/^TOO LITTLE: K1 and K2 .* continuously, and 99 A is asked for\./);
+    expect(plain(build)).toMatch(/^Parts {3}for what is recommended, not for the load asked for$/m);
   });
 
   it('tells a load that was asked for as it was asked for', () => {
@@ -138,7 +149,7 @@ describe('the text of what may be built', () => {
       weight: 'weakens',
       text: 'it was measured cold',
     } as const;
-    const build = pair();
+    const build = builds.parallel;
     const text = plain({
       ...build,
       concerns: [
