@@ -11,8 +11,8 @@ import {
   type Switching,
 } from './switching.js';
 
-/** Three positions to the power of ten are some 59,000 states. */
-export const mostMoving = 10;
+/** Nine change-over contacts, or fourteen that open or close: looked through in seconds. */
+const mostStates = 3 ** 9;
 
 /** What a moving contact does at one moment. */
 interface Step {
@@ -45,10 +45,10 @@ export function movementBetween(
   to: readonly string[],
 ): Movement {
   const movers = moversOf(switching.contacts, from, to);
-  if (movers.length > mostMoving) {
+  if (statesOf(movers) > mostStates) {
     throw new UnfitWishError(
-      `${movers.length} contacts move at one switch-over; every order of ${mostMoving} at most can be looked at`,
-      'put an arrangement in between, or name contacts once that are one contact',
+      `${movers.length} contacts move at one switch-over and stand in ${statesOf(movers)} ways meanwhile; ${mostStates} at most can be looked at`,
+      'Put an arrangement in between, or name contacts once that are one contact.',
     );
   }
   const look = lookedAt(switching, settledState(switching.contacts, from), movers);
@@ -57,6 +57,19 @@ export function movementBetween(
     moving: movers.map(({ contact }) => contact),
     bySequence: Object.fromEntries(verdicts) as Movement['bySequence'],
   };
+}
+
+/** Whether so few contacts move that every order of them can be looked at. */
+export function canBeLookedAt(
+  contacts: readonly Contact[],
+  from: readonly string[],
+  to: readonly string[],
+): boolean {
+  return statesOf(moversOf(contacts, from, to)) <= mostStates;
+}
+
+function statesOf(movers: readonly Mover[]): number {
+  return movers.reduce((states, { steps }) => states * (steps.length + 1), 1);
 }
 
 function moversOf(

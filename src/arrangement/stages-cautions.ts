@@ -4,7 +4,7 @@ import { listed } from '../quantity/listed.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import { hasStack, type LaidOut } from './laid-out.js';
-import { mostMoving, movementBetween } from './movements.js';
+import { canBeLookedAt, movementBetween } from './movements.js';
 import type { StagesFound } from './stages-standing.js';
 import type { SwitchOver } from './staged-build.js';
 
@@ -47,7 +47,7 @@ function touchCaution(laid: readonly LaidOut[]): readonly string[] {
 function fallBackCautions({ laid, switching, wish }: StagesFound): readonly string[] {
   if (wish.sequence === 'any-order') return [];
   return laid.flatMap(({ found: { name }, driven }) => {
-    if (driven.length === 0 || driven.length > mostMoving) return [];
+    if (!canBeLookedAt(switching.contacts, driven, [])) return [];
     const verdict = movementBetween(switching, driven, []).bySequence['any-order'];
     return verdict.kind === 'clear'
       ? []
