@@ -228,9 +228,7 @@ describe('without ballast', patience, () => {
     const W1 = madeProfile('W1', { openCircuit: 12.1, dropout: 6, label: { voltage: 12, current: 2.5 } });
     const { failsAt, story: told } = story([K1, W1]);
     expect(failsAt).toBeCloseTo(5.3, 1);
-    expect(told.at(-1)).toMatch(
-      /^What is left could hold the bus only once it had fallen by more than 5 %/,
-    );
+    expect(told.at(-1)).toMatch(/^What is left could hold the bus only once it had fallen by more than 5 %/);
   });
 
   it('nobody is called the hog where the records can’t tell', () => {
