@@ -75,7 +75,9 @@ function guaranteedText(build: StagedBuild, style: Style): string {
   ]);
   const head = ['output, V', 'at least', 'from', 'set by'];
   return section(
-    'What it is guaranteed to feed',
+    build.standing.kind === 'may-be-built'
+      ? 'What it is guaranteed to feed'
+      : 'What it would feed by these numbers alone',
     alignTable([head, ...rows], ['left', 'left', 'left', 'left']),
     style,
     'output rising; coming down it may be less',
