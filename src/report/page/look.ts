@@ -104,6 +104,7 @@ thead th{font-weight:600;color:var(--soft);font-size:.85rem;border-bottom:1.5px 
 tbody th{font-weight:600;min-width:5.5rem}
 .number{text-align:right}
 td.number,td.fixed{white-space:nowrap}
+td.text{min-width:9.5rem}
 td.long{min-width:13rem}
 .state{font-weight:600;white-space:nowrap;color:var(--c,inherit)}
 figure{margin:1.4rem 0;break-inside:avoid}

@@ -3,7 +3,7 @@ import { type Content, element, type Markup } from './markup.js';
 /** A column: its heading, and how its cells stand. `name`: each heads its row. */
 export interface Column {
   readonly heading: string;
-  readonly as?: 'name' | 'number' | 'fixed' | 'long';
+  readonly as?: 'name' | 'number' | 'fixed' | 'text' | 'long';
 }
 
 /**

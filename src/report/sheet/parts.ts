@@ -16,7 +16,7 @@ export function partsSection(build: AnyBuild): Markup | undefined {
       'Marks are those of the circuit; ratings are the least to buy.',
       [
         { heading: 'Mark', as: 'name' },
-        { heading: 'What' },
+        { heading: 'What', as: 'text' },
         { heading: 'Ratings', as: 'fixed' },
         { heading: 'Why', as: 'long' },
       ],

@@ -5,7 +5,6 @@ import type { Dimension } from '../../quantity/quantity.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { brief } from '../build/brief.js';
 import { estimateCells } from '../build/estimate-text.js';
-import { sentence } from '../build/prose.js';
 import { inMinutes } from '../in-minutes.js';
 import { type Content, element, type Markup } from '../page/markup.js';
 import { bullets, section } from '../page/page.js';
@@ -30,7 +29,7 @@ export function concernsSection(concerns: readonly Concern[]): Markup | undefine
 function inWords({ module, run, text }: Concern): Content {
   return [
     element('strong', {}, module),
-    `: ${sentence(text)}`,
+    `: ${text}${/[.!?]$/.test(text) ? '' : '.'}`,
     run !== undefined && [' ', element('span', { class: 'soft' }, `Record ${run}.`)],
   ];
 }

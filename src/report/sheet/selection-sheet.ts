@@ -123,7 +123,7 @@ function assignment(
 function rest({ unused, leftOut, considered }: Selection): Markup | undefined {
   const lines = [
     ...(unused.length === 0 ? [] : [`Left over: ${listed(unused)}.`]),
-    ...leftOut.map(({ module, why }) => `${module} was left out: ${sentence(why)}`),
+    ...leftOut.map(({ module, why }) => sentence(`${module} was left out: ${why}`)),
     ...(considered > 1 ? [`${considered} assignments were compared.`] : []),
   ];
   return lines.length === 0 ? undefined : section('The rest of the drawer', bullets(lines));

@@ -1,0 +1,84 @@
+import { describe, expect, it } from 'vitest';
+import type { Standing } from '../../../src/arrangement/build.js';
+import { buildSeries } from '../../../src/arrangement/build-series.js';
+import { partMarks } from '../../../src/report/diagram/part-marks.js';
+import { buildPage } from '../../../src/report/page/build-page.js';
+import { madeProfile } from '../../arrangement/made-profile.js';
+import { concern, madeParallel, madeSelection, madeSeries, madeStages } from './made-builds.js';
+
+const made = { program: 'railproof 0.1.0', date: new Date('2026-12-02T03:30:00Z') };
+const refused: Standing = { kind: 'must-not-be-built', because: ['K2 is bonded to earth: leave it out'] };
+const open: Standing = { kind: 'cannot-tell', because: ['nobody measured the isolation of K2'] };
+
+const makers = {
+  parallel: (standing: Standing) => madeParallel({ standing }),
+  series: (standing: Standing) => madeSeries({ standing }),
+  stages: (standing: Standing) => madeStages({ standing }),
+  selection: (standing: Standing) => madeSelection({ standing }),
+};
+
+describe.each(Object.entries(makers))('the build sheet of %s', (_, make) => {
+  it('says first that it may be built, then draws it and lists its parts', () => {
+    const page = buildPage(make({ kind: 'may-be-built' }), made);
+    expect(page.indexOf('>May be built<')).toBeGreaterThan(0);
+    expect(page.indexOf('>May be built<')).toBeLessThan(page.indexOf('<h2'));
+    expect(page).toContain('class="diagram"');
+    expect(page).toContain('>Parts<');
+    expect(page).not.toContain('Not to be built');
+  });
+
+  it('that must not be built says so and why, and shows nothing to build', () => {
+    const page = buildPage(make(refused), made);
+    expect(page).toContain('>Must not be built<');
+    expect(page).toContain('K2 is bonded to earth: leave it out.');
+    expect(page).not.toMatch(/class="diagram"|>Parts<|>May be built<|ecommended, continuously/);
+  });
+
+  it('that nobody can tell says so at the top, and again at whatever could be taken for a plan', () => {
+    const page = buildPage(make(open), made);
+    expect(page).toContain('>Cannot tell whether it may be built<');
+    expect(page).toContain('Nobody measured the isolation of K2.');
+    expect(page.match(/Not to be built yet/g)).toHaveLength(2);
+  });
+
+  it('says where its numbers came from, who made it and when', () => {
+    const page = buildPage(make({ kind: 'may-be-built' }), made);
+    expect(page).toMatch(/20261130T091500Z-\w+-real-limit/);
+    expect(page).toContain('2026-11-30 09:15 UTC');
+    expect(page).toContain('railproof 0.1.0 on <time datetime="2026-12-02T03:30:00.000Z">');
+  });
+
+  it('fits on a stick a thousand times, and comes out the same again', () => {
+    const page = buildPage(make({ kind: 'may-be-built' }), made);
+    expect(page.length).toBeLessThan(150_000);
+    expect(buildPage(make({ kind: 'may-be-built' }), made)).toBe(page);
+  });
+});
+
+it('a load above what is recommended is said to be too much, whatever else holds', () => {
+  const page = buildPage(madeParallel({ load: { current: 11, from: 'asked-for' } }), made);
+  expect(page).toContain('>Too little for the load asked for<');
+  expect(page).not.toContain('>May be built<');
+});
+
+it('concerns stand with what nothing can be decided on first', () => {
+  const hinders = { ...concern, module: 'K3', weight: 'hinders', text: 'cut off: run it again' } as const;
+  const page = buildPage(madeParallel({ concerns: [concern, hinders] }), made);
+  expect(page.indexOf('Nothing can be decided on these')).toBeLessThan(
+    page.indexOf('To be known and weighed'),
+  );
+  expect(page).toContain('2 things are to be known about the records first');
+});
+
+it('a part that is not drawn is said not to be', () => {
+  const diode = { marks: ['D1'], what: 'optional diode', ratings: [], why: 'for a group that must go on' };
+  const page = buildPage(madeParallel({ parts: [diode] }), made);
+  expect(page).toContain('optional diode<span class="soft"> (not drawn)</span>');
+});
+
+it('the marks of the drawn diodes are those of the parts list', () => {
+  const build = buildSeries([madeProfile('K1'), madeProfile('K2')], { load: undefined });
+  const drawn = [...partMarks(build.circuit).reverse.values()];
+  expect(drawn).toHaveLength(2);
+  expect(build.parts.flatMap(({ marks }) => marks)).toEqual(expect.arrayContaining(drawn));
+});
