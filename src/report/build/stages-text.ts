@@ -77,7 +77,7 @@ function guaranteedText(build: StagedBuild, style: Style): string {
   return section(
     build.standing.kind === 'may-be-built'
       ? 'What it is guaranteed to feed'
-      : 'What it would feed by these numbers alone',
+      : 'By these numbers alone it would feed',
     alignTable([head, ...rows], ['left', 'left', 'left', 'left']),
     style,
     'output rising; coming down it may be less',
