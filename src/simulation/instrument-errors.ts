@@ -15,7 +15,7 @@ const FLICKER_OF_LAST_DIGIT = 0.3;
  * so that a read-back differs a little from its setting, as it does on a bench.
  */
 export function errorOf(
-  simulation: Simulation,
+  simulation: Pick<Simulation, 'instruments'>,
   post: Post,
   driver: Driver,
   quantity: string,
