@@ -154,7 +154,8 @@ header,main,footer{max-width:none;padding-inline:0}
 header{padding-top:0}
 section{margin-top:1.6rem}
 tr,li,figure,.standing{break-inside:avoid}
-thead{display:table-header-group}
+thead{display:table-header-group;break-after:avoid}
+caption{break-after:avoid}
 h1{font-size:20pt}h2{font-size:14pt}h3{font-size:11pt}
 .wide{overflow:visible}
 .chart{width:100%;max-width:16cm;min-width:0}
