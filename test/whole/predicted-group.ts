@@ -72,7 +72,7 @@ function randomGroup(
   { uniform: between }: Random,
 ): CircuitCase {
   const rated = { voltage: 12, current: between(2, 3.2) };
-  const modules = Array.from({ length: seed % 2 === 0 ? 2 : 3 }, (_, index) =>
+  const modules = Array.from({ length: seed % 3 === 0 ? 3 : 2 }, (_, index) =>
     brick(`K${index + 1}`, {
       openCircuitVoltage: 12 * between(0.998, 1.004),
       droopResistance: between(0.006, 0.03),

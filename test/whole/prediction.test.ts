@@ -3,7 +3,7 @@ import { buildParallel } from '../../src/arrangement/build-parallel.js';
 import type { Band } from '../../src/arrangement/build.js';
 import { type MeasuredGroup, measuredGroup } from './predicted-group.js';
 
-/** All of the 100 that the promise is made for with RAILPROOF_SEEDS=100; fewer in the ordinary run. */
+/** With RAILPROOF_SEEDS=150 there are the 100 pairs that the promise is made for, and 50 groups of three. */
 const seeds = Number(process.env['RAILPROOF_SEEDS'] ?? 3);
 
 /** A module's share at the load at which it was measured, and the band in which it was to lie. */
