@@ -1,9 +1,10 @@
-import { amps, volts } from '../analysis/in-words.js';
+import { amps, givenPercent, volts } from '../analysis/in-words.js';
 import { listed } from '../quantity/listed.js';
-import { formatExact } from '../quantity/format-quantity.js';
+import { formatExact, formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Ratio } from '../quantity/quantity.js';
 import { roundedDown } from '../quantity/rounded-down.js';
 import type { Concern, Standing } from './build.js';
+import { usualMismatch } from './forbidden-connection.js';
 import type { ModuleProfile } from './module-profile.js';
 import type { ParallelBuild, ParallelWish } from './parallel-build.js';
 import { standingOf } from './standing-of.js';
@@ -20,10 +21,10 @@ interface Found {
 }
 
 /**
- * Whether a group may be built. Refused: modules made for different voltages; one that its records recommend for
- * nothing; an imbalance that no ballast gives; a ballast that takes more than a tenth of the voltage; a load above
- * what is recommended. An output that is bonded to earth or leaks to it refuses nothing: all 0 V are joined
- * anyway. The cautions say what it means.
+ * Whether a group may be built. Refused: modules made for different voltages, or that give such; one that its
+ * records recommend for nothing; an imbalance that no ballast gives; a ballast that takes more than a tenth of the
+ * voltage; a load above what is recommended. An output that is bonded to earth or leaks to it refuses nothing: all
+ * 0 V are joined anyway. The cautions say what it means.
  */
 export function parallelStanding(
   profiles: readonly ModuleProfile[],
@@ -33,6 +34,7 @@ export function parallelStanding(
   const concerns = profiles.flatMap((profile) => profile.concerns);
   const refusals = [
     ...differentLabels(profiles),
+    ...farApart(profiles),
     ...profiles.flatMap(recommendedForNothing),
     ...ballastRefusals(profiles, found),
     ...tooMuch(profiles, wish, found),
@@ -53,6 +55,21 @@ function differentLabels(profiles: readonly ModuleProfile[]): readonly string[] 
   };
   return [
     `${of(highest)} is made for ${written(highest)} and ${of(lowest)} for ${written(lowest)}: side by side the higher carries everything, the lower nothing, and its output is held above what it is made for. Put only modules of one voltage side by side.`,
+  ];
+}
+
+/** By more than outputs that are meant to be alike may differ, as where contacts join them. */
+function farApart(profiles: readonly ModuleProfile[]): readonly string[] {
+  if (differentLabels(profiles).length > 0) return [];
+  const rising = profiles.toSorted((one, other) => one.openCircuit.value - other.openCircuit.value);
+  const [lowest, highest] = [rising.at(0), rising.at(-1)];
+  if (lowest === undefined || highest === undefined) return [];
+  const apart = highest.openCircuit.value - lowest.openCircuit.value;
+  if (apart <= usualMismatch * highest.label.voltage) return [];
+  const read = ({ openCircuit }: ModuleProfile): string =>
+    formatQuantity(openCircuit.value, 'voltage', { significant: 4 });
+  return [
+    `With no load ${highest.name} gives ${read(highest)} and ${lowest.name} ${read(lowest)}, ${volts(apart)} apart, more than ${givenPercent(usualMismatch)} of the ${volts(highest.label.voltage)} that both are made for: the lower would give nothing while its output is held up by the other. See which of them is off its label and why, and leave it out.`,
   ];
 }
 

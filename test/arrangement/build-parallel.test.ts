@@ -302,6 +302,15 @@ describe('a group that may not be built', patience, () => {
     expect(build.usable.value).toBeCloseTo(K1.usable.value, 2);
   });
 
+  it('of which one gives far less than its label says: it would idle under the voltage of the other', () => {
+    const low = madeProfile('K2', { openCircuit: 12 });
+    const build = buildParallel([K1, low, K3], given(0.05));
+    expect(build.standing.kind).toBe('must-not-be-built');
+    expect(because(build)).toMatch(/^With no load K3 gives 15\.23 V and K2 12\.00 V, 3\.23 V apart/);
+    const near = madeProfile('K2', { openCircuit: 14.6 });
+    expect(buildParallel([K1, near], given(0.1)).standing.kind).toBe('may-be-built');
+  });
+
   it('with one that is recommended for nothing', () => {
     const build = buildParallel([K1, madeProfile('K2', { recommended: 0 })], within(0.1));
     expect(because(build)).toMatch(/K2 is recommended for nothing/);
