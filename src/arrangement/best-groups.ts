@@ -22,6 +22,8 @@ export interface Packing extends Worth {
 
 /** Groups looked at before it is given up: some ten seconds. */
 const mostLooks = 5e7;
+/** What it costs to ask whether a way can be built, in looks. */
+const asking = 50;
 
 /**
  * The best of all ways to take `count` groups out of a drawer, and the best of all others. The better one has the
@@ -54,7 +56,9 @@ export function bestPackings(
 
   const take = (packing: Packing): void => {
     complete += 1;
-    if (!isSmallest(packing, candidates) || !isBuildable(packing)) return;
+    if (!isSmallest(packing, candidates)) return;
+    looks += asking;
+    if (!isBuildable(packing)) return;
     if (best === undefined || isBetter(packing, best)) [best, next] = [packing, best];
     else next = packing;
   };

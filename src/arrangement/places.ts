@@ -43,6 +43,22 @@ export function inStacks<G extends PlacedGroup>(
   );
 }
 
+/**
+ * Whether a drawer holds enough modules for each place, even if all below were of the lowest voltage that there is;
+ * where not, no way to group them can be spread.
+ */
+export function mayBeStacked(
+  modules: readonly ModuleProfile[],
+  { group, stack, supplies }: { readonly group: number; readonly stack: number; readonly supplies: number },
+): boolean {
+  const alone = modules.map((module) => ({ modules: [module], limit: 0 }));
+  const lowest = Math.min(...alone.map(topOf));
+  const most = alone.map((each) => highestPlace(each, { highest: lowest, stack }));
+  return Array.from({ length: stack }, (_, place) => place).every(
+    (place) => most.filter((each) => each >= place).length >= group * supplies * (stack - place),
+  );
+}
+
 /** The highest place, the lowest being 0, that a group's isolation bears. */
 function highestPlace(
   group: PlacedGroup,

@@ -7,7 +7,7 @@ import { type Drawer, sortedDrawer } from './drawer.js';
 import { ballastsFor, candidatesOf, choose } from './group-candidates.js';
 import type { ModuleProfile } from './module-profile.js';
 import { requireSharing } from './parallel-wish.js';
-import { inStacks } from './places.js';
+import { inStacks, mayBeStacked } from './places.js';
 import { cautionsOf, circuitOf, modulesIn, partsOf, standingOfSupply } from './selected-supply.js';
 import type { Selection, SelectionWish } from './selection.js';
 import { marginOf } from './selection-margin.js';
@@ -118,6 +118,8 @@ function waysOf(
       'Give the records of fewer modules.',
     );
   }
+  const considered = countWays(modules.length, group, count);
+  if (!mayBeStacked(modules, wish)) return { best: undefined, next: undefined, considered };
   const ballasts = ballastsFor(wish);
   const candidates = candidatesOf(modules, wish, ballasts);
   const spreadOf = (packing: Packing): Spread | undefined => {
@@ -139,7 +141,7 @@ function waysOf(
   return {
     best: best && spreadOf(best),
     next: next && spreadOf(next),
-    considered: countWays(modules.length, group, count),
+    considered,
   };
 }
 

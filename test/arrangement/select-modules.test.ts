@@ -151,6 +151,18 @@ describe('a stack out of a drawer', () => {
     expect(standing).toMatchObject({ kind: 'cannot-tell' });
   });
 
+  it('is told at once of a drawer in which too few may stand on another, however large it is', () => {
+    const names = Array.from({ length: 30 }, (_, index) => `K${index + 1}`);
+    const weak = Object.fromEntries(names.map((name) => [name, { outputIsolation: 20 }]));
+    const began = performance.now();
+    const { standing } = select(drawer(weak), { ...pairs, stack: 3, supplies: 5 });
+    expect(standing).toMatchObject({
+      kind: 'cannot-tell',
+      because: [expect.stringContaining('no choice bears its place') as string],
+    });
+    expect(performance.now() - began).toBeLessThan(3000);
+  });
+
   it('of unknown isolation is possible within 60 V, and weakens it', () => {
     const unknown = { outputIsolation: 'unknown' } as const;
     const { standing, concerns } = select(drawer({ K1: unknown, K2: unknown }), { ...wish, stack: 2 });
