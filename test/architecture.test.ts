@@ -93,6 +93,8 @@ describe('imports point one way', () => {
     ['csv-stringify', 'record'],
     ['simple-statistics', 'statistics'],
     ['fastest-levenshtein', 'quantity'],
+    ['d3-scale', 'report'],
+    ['d3-shape', 'report'],
     ['commander', 'cli'],
   ])('%s is known in one room only: %s', (name, room) => {
     const users = imports.filter(({ specifier }) => specifier === name || specifier.startsWith(`${name}/`));
