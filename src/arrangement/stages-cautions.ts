@@ -1,10 +1,11 @@
-import { volts } from '../analysis/in-words.js';
+import { amps, volts } from '../analysis/in-words.js';
 import { touchable } from '../circuit/touchable.js';
 import { listed } from '../quantity/listed.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import { hasStack, type LaidOut } from './laid-out.js';
 import { canBeLookedAt, movementBetween } from './movements.js';
+import { dissipationOf } from './stages-sense.js';
 import type { StagesFound } from './stages-standing.js';
 import type { SwitchOver } from './staged-build.js';
 
@@ -20,13 +21,27 @@ export function stagesCautions(found: StagesFound): readonly string[] {
         ]
       : []),
     ...fallBackCautions(found),
+    ...leapCautions(found),
     ...interruptCautions(found),
     ...unusedCautions(found),
     'Contacts break a direct current, which does not go out by itself: take their rating for DC at the voltage named, switch with little or no load where that can be had, and expect bounce. What is said here of the order of contacts holds for contacts that work: one that is welded is not among the orders.',
     `What is guaranteed is for currents that hold for good. At each switch-over the input of the linear stage jumps, by up to ${volts(highestSwing(switchOvers))}: its output must bear that without passing it on.`,
+    ...shortCaution(found),
     'The heat is that of the linear stage alone, at the highest voltage that the modules may have. Whatever else stands before or behind it gets warm too.',
     'All modules are switched on and off together, from one switched supply.',
     'Local codes and a licensed person decide what may be joined to the mains and to earth, and how.',
+  ];
+}
+
+/** Nobody keeps an output from asking more than is guaranteed. */
+function shortCaution({ laid, wish: { linearStage } }: StagesFound): readonly string[] {
+  const across = highestOf(laid);
+  const heat = across * linearStage.current;
+  const most = dissipationOf(linearStage);
+  if (heat <= most) return [];
+  const watts = (power: number): string => formatQuantity(power, 'power', { significant: 3 });
+  return [
+    `Nothing here keeps the load from asking more than is guaranteed: a short at the output would put up to ${volts(across)} across the linear stage, and at its ${amps(linearStage.current)} make ${watts(heat)} of heat, where it may make ${watts(most)}. It must limit itself by its heat, or be switched off.`,
   ];
 }
 
@@ -43,9 +58,8 @@ function touchCaution(laid: readonly LaidOut[]): readonly string[] {
     : [];
 }
 
-/** Relays that lose their supply fall back one by one, and no sequence holds any more. */
-function fallBackCautions({ laid, switching, wish }: StagesFound): readonly string[] {
-  if (wish.sequence === 'any-order') return [];
+/** Relays that lose their supply fall back one by one, over all steps at once, and no sequence holds any more. */
+function fallBackCautions({ laid, switching }: StagesFound): readonly string[] {
   return laid.flatMap(({ found: { name }, driven }) => {
     if (!canBeLookedAt(switching.contacts, driven, [])) return [];
     const verdict = movementBetween(switching, driven, []).bySequence['any-order'];
@@ -55,6 +69,30 @@ function fallBackCautions({ laid, switching, wish }: StagesFound): readonly stri
           `When the contacts lose their supply in ${name} they fall back in any order: ${verdict.order.join(', then ')}, and ${verdict.connection.sentence}. The modules must be off before the contacts are, or the contacts hold until the outputs are dead.`,
         ];
   });
+}
+
+/** An output that leaps over an arrangement moves the contacts of two steps at once. */
+function leapCautions({ laid, switching, wish }: StagesFound): readonly string[] {
+  const leaps = laid.flatMap((lower, index) =>
+    laid.slice(index + 2).flatMap((upper) => [[lower, upper] as const, [upper, lower] as const]),
+  );
+  const told = leaps.flatMap(([from, to]): readonly string[] => {
+    const way = `From ${from.found.name} straight to ${to.found.name}`;
+    if (!canBeLookedAt(switching.contacts, from.driven, to.driven)) {
+      return [`${way} more contacts move than can be looked at.`];
+    }
+    const verdict = movementBetween(switching, from.driven, to.driven).bySequence[wish.sequence];
+    return verdict.kind === 'clear'
+      ? []
+      : [
+          `${way}, as when the output leaps: ${verdict.order.join(', then ')}, and ${verdict.connection.sentence}.`,
+        ];
+  });
+  return told.length === 0
+    ? []
+    : [
+        `${told.join(' ')} Go through all arrangements in between, and wait at each until its contacts have come to rest.`,
+      ];
 }
 
 function interruptCautions({ switchOvers, wish }: StagesFound): readonly string[] {

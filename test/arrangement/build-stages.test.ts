@@ -175,6 +175,13 @@ describe('what is guaranteed', () => {
     expect(new Set(weak.guaranteed.map(({ rising }) => rising.setBy))).toEqual(new Set(['linear-stage']));
   });
 
+  it('is no more than the linear stage can bear, but a short at its output is', () => {
+    // 3 × 12.1 V, and what the records leave open, at 5 A.
+    expect(buildStages(bricks(), valveBench()).cautions.join('\n')).toMatch(
+      /a short at the output would put up to 36\.3 V across the linear stage, and at its 5\.00 A make 18\d W of heat, where it may make 25\.0 W/,
+    );
+  });
+
   it('falls with the temperature of the case', () => {
     const by = (hottest: number) =>
       buildStages(
@@ -234,6 +241,38 @@ describe('contacts that move at different times', () => {
       'When the contacts lose their supply in two they fall back in any order: A closes, and the output of W2 would be shorted',
     );
     expect(build.cautions.join('\n')).toContain('Between pair and two the linear stage is without any feed');
+  });
+
+  describe('that harm in no step, and in a leap over one', () => {
+    // W1; W2 upon W1; W3, of 24 V, upon W1. T lies across W3 at rest, through the node that C joins.
+    const profiles = bricks({ W3: { openCircuit: 24.2, label: { voltage: 24, current: 2.5 } } });
+    const leaping = valveBench({
+      ballast: undefined,
+      wires: [['W1-', 'in-']],
+      contacts: [breaks('T', 'W3+', 'W1+'), makes('B', 'W1+', 'W2-'), makes('C', 'W1+', 'W3-')],
+      diodes: [diode('D1', 'W1+', 'in+'), diode('D2', 'W2+', 'in+'), diode('D3', 'W3+', 'in+')],
+      arrangements: [
+        { name: 'one', form: w1, driven: [] },
+        { name: 'two', form: stack(w1, w2), driven: ['T', 'B'] },
+        { name: 'three', form: stack(w1, w3), driven: ['T', 'B', 'C'] },
+      ],
+      output: { from: 3, to: 30 },
+    });
+    const { standing, cautions } = buildStages(profiles, leaping);
+    const said = cautions.join('\n');
+
+    it('come with a word on what happens without supply, in whatever order they may move', () => {
+      expect(standing).toEqual({ kind: 'may-be-built' });
+      expect(said).toContain(
+        'When the contacts lose their supply in three they fall back in any order: T closes, and the output of W3 would be shorted',
+      );
+    });
+
+    it('come with a word on an output that leaps', () => {
+      expect(said).toContain(
+        'From one straight to three, as when the output leaps: C closes, and the output of W3 would be shorted, through C and T.',
+      );
+    });
   });
 
   it('are refused in any way of driving where they bridge', () => {
