@@ -41,9 +41,9 @@ export interface Concern {
     | 'not-warmed'
     /** Nobody knows what its output withstands to earth. */
     | 'isolation-unknown'
-    /** It did not conform, or it failed. */
+    /** It did not conform, it failed, or it is off its label. */
     | 'not-accepted'
-    /** Its records describe it in different words: perhaps two modules go by one name. */
+    /** Its records describe it in different words, or disagree on its earth: perhaps two modules go by one name. */
     | 'described-otherwise'
     /** From a simulated bench: for practice only. */
     | 'simulated';

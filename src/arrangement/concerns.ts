@@ -6,8 +6,11 @@ import { changesSince } from './changes-since.js';
 import type { ModuleProfile, Taken } from './module-profile.js';
 import { earthHeardOf, heardOf, type ModuleRecords, newestOfEach, sourceOf } from './module-records.js';
 import { wasWarmed } from './recommended.js';
-import type { RecordSource } from './understood-record.js';
+import type { RecordSource, UnderstoodRecord } from './understood-record.js';
 import { type Use, usesOf } from './uses.js';
+
+/** A supply is set to within a few per cent of its label. Common practice, no published source. */
+const mostOffLabel = 0.1;
 
 type Profile = Omit<ModuleProfile, 'concerns'>;
 type Told = Pick<Concern, 'kind' | 'text'> & Partial<Pick<Concern, 'run' | 'weight'>>;
@@ -22,6 +25,9 @@ export function concernsOf(module: ModuleRecords, profile: Profile, today: Date)
   const uses = usesOf(profile);
   const told: readonly Told[] = [
     ...uses.flatMap(brokenOff),
+    ...inVain(module, uses),
+    ...earthsDisagree(module),
+    ...offLabel(profile),
     ...uses.flatMap((use) => changed(module, use)),
     ...uses.flatMap((use) => old(use, today)),
     ...limitUnknown(profile.usable),
@@ -51,6 +57,77 @@ function brokenOff({ from, decides }: Use): readonly Told[] {
       weight: decides ? 'hinders' : 'weakens',
       text: `its ${dated(from)} ${how}, and nobody knows what the rest would have shown: run it again`,
     },
+  ];
+}
+
+/**
+ * A newer record that gave nothing to build on must not be forgotten for an older one that did: the module may have
+ * failed in it. So may one that was stopped, whatever it was for.
+ */
+function inVain(module: ModuleRecords, uses: readonly Use[]): readonly Told[] {
+  const isUsed = ({ run }: UnderstoodRecord): boolean => uses.some(({ from }) => from.run === run);
+  const isLater = ({ header }: UnderstoodRecord): boolean =>
+    uses.some(
+      ({ from, decides }) =>
+        decides &&
+        from.procedure === header.procedure.name &&
+        Date.parse(from.began) < Date.parse(header.began),
+    );
+  return newestOfEach(module.alone.map((record) => ({ record }))).flatMap(({ record }): readonly Told[] => {
+    if (isUsed(record)) return [];
+    const from = sourceOf(record);
+    if (from.state !== 'whole') return brokenOff({ from, decides: true, mustBeFresh: false });
+    return isLater(record)
+      ? [
+          {
+            kind: 'not-accepted',
+            run: record.run,
+            weight: 'hinders',
+            text: `its ${dated(from)} came to no result, though an older one did: find out why, and run it again`,
+          },
+        ]
+      : [];
+  });
+}
+
+/** A bond to earth does not come or go by itself. */
+function earthsDisagree(module: ModuleRecords): readonly Told[] {
+  const now = earthHeardOf(module).filter(
+    ({ record, finding }) => finding.value !== 'undetermined' && changesSince(record, module).length === 0,
+  );
+  const newest = now.at(-1);
+  const other = now.findLast(({ finding }) => finding.value !== newest?.finding.value);
+  if (newest === undefined || other === undefined) return [];
+  const said = ({ record, finding }: typeof newest): string =>
+    `${String(finding.value)} by its ${dated(sourceOf(record))}`;
+  return [
+    {
+      kind: 'described-otherwise',
+      run: newest.record.run,
+      weight: newest.finding.value === 'isolated' ? 'hinders' : 'weakens',
+      text: `its output is ${said(newest)} and ${said(other)}, and no change in between is known: write what was changed into its module file and run isolation again, or leave out the record that is wrong`,
+    },
+  ];
+}
+
+function offLabel({ openCircuit, label }: Profile): readonly Told[] {
+  const off = openCircuit.value / label.voltage - 1;
+  if (Math.abs(off) <= mostOffLabel) return [];
+  const given = `with no load it gives ${formatQuantity(openCircuit.value, 'voltage', { significant: 3 })}, and its label says ${formatQuantity(label.voltage, 'voltage')}`;
+  const { run } = openCircuit.from;
+  return [
+    off < 0
+      ? {
+          kind: 'not-accepted',
+          run,
+          weight: 'hinders',
+          text: `${given}: it has failed, or it is another module; find out before it is used`,
+        }
+      : {
+          kind: 'not-accepted',
+          run,
+          text: `${given}: see that it regulates, and that what it feeds bears that`,
+        },
   ];
 }
 

@@ -122,12 +122,62 @@ describe('what a builder must know of the records', () => {
         text: 'it did not conform in its isolation of 2026-11-28 (required: earth-relation is isolated): see that it is good enough for this',
       },
     ]);
-    const accepted = madeRecord({
-      on: '2026-11-29',
-      procedure: 'acceptance',
-      findings: [word('earth-relation', 'isolated')],
+    const weak = madeRecord({
+      findings: warmed,
+      unmet: [{ finding: 'usable-current', requirement: 'at least 6 A' }],
     });
-    expect(concerns([limit, isolation('2026-11-28', 'bonded'), accepted])).toEqual([]);
+    const accepted = madeRecord({ on: '2026-12-01', procedure: 'acceptance', findings: warmed });
+    expect(concerns([weak])).toMatchObject([{ kind: 'not-accepted' }]);
+    expect(concerns([weak, accepted])).toEqual([]);
+  });
+
+  it('is an earth that is found otherwise than before, with no change in between', () => {
+    const limit = madeRecord({ on: '2026-11-29', findings: warmed });
+    const [bonded, isolated] = [isolation('2026-11-28', 'bonded'), isolation('2026-12-01', 'isolated')];
+    expect(concerns([limit, bonded, isolated])).toMatchObject([
+      {
+        kind: 'described-otherwise',
+        weight: 'hinders',
+        run: isolated.run,
+        text: expect.stringContaining(
+          'its output is isolated by its isolation of 2026-12-01 and bonded by its isolation of 2026-11-28, and no change in between is known',
+        ) as string,
+      },
+    ]);
+    // What is refused anyway is not held up by a doubt.
+    const then = concerns([limit, isolation('2026-11-28', 'isolated'), isolation('2026-12-01', 'bonded')]);
+    expect(then.find(({ kind }) => kind === 'described-otherwise')).toMatchObject({ weight: 'weakens' });
+  });
+
+  it('is a newer record that was stopped, or came to nothing, and is not forgotten for an older one', () => {
+    const limit = madeRecord({ on: '2026-11-20', findings: warmed });
+    const stopped = madeRecord({ on: '2026-12-01', findings: [], state: 'stopped' });
+    expect(concerns([limit, stopped])).toMatchObject([
+      { kind: 'cut-off', weight: 'hinders', run: stopped.run },
+    ]);
+    const soak = madeRecord({ on: '2026-12-01', procedure: 'thermal-soak', findings: [], state: 'stopped' });
+    expect(concerns([limit, soak])).toMatchObject([{ kind: 'cut-off', weight: 'hinders', run: soak.run }]);
+    const nothing = madeRecord({ on: '2026-12-01', findings: [] });
+    expect(concerns([limit, nothing])).toMatchObject([
+      { kind: 'not-accepted', weight: 'hinders', run: nothing.run },
+    ]);
+    // Run again, the stopped one is behind it.
+    expect(
+      concerns([{ ...stopped, header: { ...stopped.header, began: '2026-11-10T09:15:00.000Z' } }, limit]),
+    ).toEqual([]);
+  });
+
+  it('is a voltage that is far from the label', () => {
+    const of = (openCircuit: number) => [madeRecord({ findings: [...limitFindings({ openCircuit }), rise] })];
+    expect(concerns(of(13.6))).toEqual([]);
+    expect(concerns(of(13.2))).toMatchObject([
+      {
+        kind: 'not-accepted',
+        weight: 'hinders',
+        text: 'with no load it gives 13.2 V, and its label says 15 V: it has failed, or it is another module; find out before it is used',
+      },
+    ]);
+    expect(concerns(of(17))).toMatchObject([{ kind: 'not-accepted', weight: 'weakens' }]);
   });
 
   it('is a limit that is known too coarsely to choose by', () => {
