@@ -47,10 +47,13 @@ function byName(one: string, other: string): number {
 }
 
 function whyNot(profile: ModuleProfile, isStacked: boolean): string | undefined {
-  const { name, concerns, earth, recommended } = profile;
+  const { name, concerns, earth, input, recommended } = profile;
   const hindering = concerns.find(({ weight }) => weight === 'hinders');
   if (hindering !== undefined) return hindering.text;
   if (!(recommended.current > 0)) return `it is recommended for nothing by its records: ${recommended.why}`;
+  if (isStacked && input === 'dc') {
+    return 'it is fed with DC, and no record shows that its output is cut off from its input';
+  }
   return isStacked ? whyNotStacked(name, earth?.relation) : undefined;
 }
 

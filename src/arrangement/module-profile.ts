@@ -12,6 +12,8 @@ export interface ModuleProfile {
   /** By the newest of its records. */
   readonly label: Nameplate;
   readonly protectionClass: 'I' | 'II';
+  /** What feeds it. No record shows whether its output is cut off from a DC input. */
+  readonly input: 'mains' | 'dc';
   /** What its output withstands to earth. */
   readonly outputIsolation: 'unknown' | Volts;
   readonly openCircuit: Taken;

@@ -28,22 +28,34 @@ export function profileOf(
   today: Date,
 ): ModuleProfile {
   const { name, described } = module;
+  const usable = lowestUsable(module, line);
   const profile = {
     name,
     description: described.description,
     label: { voltage: described.rated.voltage, current: described.rated.current },
     protectionClass: described.protectionClass,
+    input: described.input,
     outputIsolation: described.outputIsolation,
     openCircuit: line.openCircuit,
     droop: line.droop,
-    usable: lowestUsable(module, line),
-    recommended,
+    usable,
+    recommended: withinUsable(recommended, usable),
     dropout: newestNumber(module, 'dropout-current'),
     shortCircuit: newestNumber(module, 'short-circuit-current'),
     limitStyle: limitStyleOf(module),
     earth: earthOf(module),
   };
   return { ...profile, concerns: concernsOf(module, profile, today) };
+}
+
+/** What another record recommended is no more than what is known to be usable now. */
+function withinUsable(
+  recommended: ModuleProfile['recommended'],
+  { interval: [low], from }: Taken,
+): ModuleProfile['recommended'] {
+  return recommended.current <= low
+    ? recommended
+    : { current: low, why: 'no more is known to be usable', from };
 }
 
 /** One who tried no further does not contradict a limit that was met elsewhere, nor does one who met none when cold. */

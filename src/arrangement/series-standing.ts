@@ -21,7 +21,8 @@ interface Placed {
  *
  * Refused: a module whose output is bonded to earth or leaks to it, wherever it stands; one whose isolation
  * does not bear its place; one that its records recommend for nothing; a load above what is recommended. A
- * module whose earth was never measured, or could not be told, can't be decided on.
+ * module whose earth was never measured, or could not be told, can't be decided on; nor can one that is fed with DC,
+ * as isolation is measured with nothing at its input.
  *
  * Where nobody knows what an output withstands to earth, 60 V decide (ES1 of IEC 62368-1). Up to there an
  * output that has been shown to be isolated may float: should it give way, what lies below it is shorted
@@ -84,7 +85,7 @@ function tooMuch({
 }
 
 function doubtsOf({ profile }: Placed): readonly string[] {
-  const { name, earth } = profile;
+  const { name, earth, input } = profile;
   const doubts: string[] = [];
   if (earth === undefined) {
     doubts.push(`How the output of ${name} stands to earth was never measured: run isolation on ${name}.`);
@@ -92,6 +93,11 @@ function doubtsOf({ profile }: Placed): readonly string[] {
   if (earth?.relation === 'undetermined') {
     doubts.push(
       `How the output of ${name} stands to earth could not be told: run isolation on ${name} again, unplugged and with good contacts.`,
+    );
+  }
+  if (input === 'dc') {
+    doubts.push(
+      `${name} is fed with DC, and no record shows that its output is cut off from its input: where it is not, what feeds it joins its 0 V to that of the others that it feeds, and shorts what stands between. Find out, or take modules that are fed from the mains.`,
     );
   }
   return doubts;

@@ -176,6 +176,12 @@ describe('a string of which it cannot be told', () => {
     expect(buildSeries(stack({}, { earth: undefined }), asRecommended).parts).toEqual([]);
   });
 
+  it('for a module that is fed with DC, as nothing shows that its output is cut off from its input', () => {
+    expect(because(stack({ input: 'dc' }, {}))).toMatch(
+      /^cannot-tell: K1 is fed with DC, and no record shows/,
+    );
+  });
+
   it('for unknown isolation beyond what is safe to touch, and not below it', () => {
     const unknown = { outputIsolation: 'unknown' as const };
     expect(because(stack(unknown, unknown, unknown, unknown))).toMatch(

@@ -13,6 +13,7 @@ export interface MadeOf {
   readonly style?: LimitStyle | undefined;
   readonly earth?: EarthRelation | undefined;
   readonly outputIsolation?: 'unknown' | number;
+  readonly input?: 'mains' | 'dc';
   readonly label?: { readonly voltage: number; readonly current: number };
   /** Standard uncertainties, all of them the module's own. */
   readonly uncertainty?: {
@@ -35,6 +36,7 @@ export function madeProfile(name: string, made: MadeOf = {}): ModuleProfile {
     description: '15 V brick from a retired label printer',
     label: made.label ?? { voltage: 15, current: 4 },
     protectionClass: 'I',
+    input: made.input ?? 'mains',
     outputIsolation: made.outputIsolation ?? 500,
     openCircuit: madeTaken(made.openCircuit ?? 15.21, uncertainty.openCircuit, from),
     droop: madeTaken(made.droop ?? 0.018, uncertainty.droop, from),

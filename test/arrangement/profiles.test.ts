@@ -94,6 +94,21 @@ describe('what the records of a module come to', () => {
     expect(kinds(profile)).not.toContain('not-warmed');
   });
 
+  it('recommends no more of it than it is known to hold, whatever an older record recommended', () => {
+    const soak = madeRecord({
+      on: '2026-12-01',
+      procedure: 'thermal-soak',
+      findings: [amperes('usable-current', 3.5)],
+    });
+    const { usable, recommended } = profileOf(madeRecord(), soak);
+    expect(recommended).toEqual({
+      current: usable.interval[0],
+      why: 'no more is known to be usable',
+      from: usable.from,
+    });
+    expect(recommended.current).toBeLessThan(3.5);
+  });
+
   it('takes a droop that came out below nothing as nothing', () => {
     const { droop } = profileOf(madeRecord({ findings: limitFindings({ droop: -0.0005 }) }));
     expect(droop.value).toBe(0);

@@ -131,6 +131,7 @@ describe('a stack out of a drawer', () => {
       K4: { earth: undefined },
       K5: {},
       K6: {},
+      K7: { input: 'dc' },
     });
     const { best, leftOut } = select(profiles, { ...wish, stack: 2 });
     expect(groupsOf(best)).toEqual([['K5', 'K6']]);
@@ -139,6 +140,7 @@ describe('a stack out of a drawer', () => {
       'K2: its output leaks to earth, so it can stand on no other',
       'K3: how its output stands to earth could not be told: run isolation on K3 again',
       'K4: how its output stands to earth was never measured: run isolation on K4',
+      'K7: it is fed with DC, and no record shows that its output is cut off from its input',
     ]);
     // Side by side it does not matter.
     expect(select(profiles, { ...pairs, supplies: 3 }).best?.supplies).toHaveLength(3);
