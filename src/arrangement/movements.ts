@@ -64,8 +64,9 @@ export function canBeLookedAt(
   contacts: readonly Contact[],
   from: readonly string[],
   to: readonly string[],
+  most = mostStates,
 ): boolean {
-  return statesOf(moversOf(contacts, from, to)) <= mostStates;
+  return statesOf(moversOf(contacts, from, to)) <= most;
 }
 
 function statesOf(movers: readonly Mover[]): number {

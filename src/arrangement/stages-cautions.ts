@@ -71,6 +71,9 @@ function fallBackCautions({ laid, switching }: StagesFound): readonly string[] {
   });
 }
 
+/** For each leap, of which there may be many: seven change-over contacts. */
+const mostLeapStates = 3 ** 7;
+
 /** An output that leaps over an arrangement moves the contacts of two steps at once. */
 function leapCautions({ laid, switching, wish }: StagesFound): readonly string[] {
   const leaps = laid.flatMap((lower, index) =>
@@ -78,8 +81,8 @@ function leapCautions({ laid, switching, wish }: StagesFound): readonly string[]
   );
   const told = leaps.flatMap(([from, to]): readonly string[] => {
     const way = `From ${from.found.name} straight to ${to.found.name}`;
-    if (!canBeLookedAt(switching.contacts, from.driven, to.driven)) {
-      return [`${way} more contacts move than can be looked at.`];
+    if (!canBeLookedAt(switching.contacts, from.driven, to.driven, mostLeapStates)) {
+      return [`${way} more contacts move than are looked at.`];
     }
     const verdict = movementBetween(switching, from.driven, to.driven).bySequence[wish.sequence];
     return verdict.kind === 'clear'
