@@ -1,5 +1,6 @@
+import type { Amperes } from '../quantity/quantity.js';
 import type { ModuleProfile } from './module-profile.js';
-import { heardOf, type ModuleRecords, newestOfEach, sourceOf } from './module-records.js';
+import { type Heard, heardOf, type ModuleRecords, newestOfEach, sourceOf } from './module-records.js';
 
 /**
  * The lowest that the newest record of each procedure recommends: a soak's counts beside that of the limit, and
@@ -10,12 +11,17 @@ export function recommendedOf(module: ModuleRecords): ModuleProfile['recommended
   const all = newestOfEach(heardOf(module, 'recommended-current'));
   const limits = all.filter(({ finding }) => finding.bound === undefined);
   const lowest = (limits.length > 0 ? limits : all)
-    .toSorted((one, other) => Number(one.finding.value) - Number(other.finding.value))
+    .toSorted((one, other) => amperesOf(one) - amperesOf(other))
     .at(0);
   if (lowest === undefined) return undefined;
   const { record, finding } = lowest;
   const why = wasWarmed(module) ? finding.note : `${finding.note}; measured cold`;
-  return { current: Number(finding.value), why, from: sourceOf(record) };
+  return { current: amperesOf(lowest), why, from: sourceOf(record) };
+}
+
+/** What is no number recommends nothing. */
+function amperesOf({ finding: { value } }: Heard): Amperes {
+  return typeof value === 'number' && Number.isFinite(value) ? value : 0;
 }
 
 /** Whether any soak showed how warm it gets. */

@@ -2,10 +2,11 @@ import { sourceOf, type Heard } from './module-records.js';
 import type { Taken } from './module-profile.js';
 import { sharedError } from './shared-errors.js';
 
-/** A measured number as it is taken over; undefined for a word, and for a number without an interval. */
+/** A measured number as it is taken over; undefined for a word, for one that is no number, and for one without an interval that is one. */
 export function takenFrom({ record, finding }: Heard): Taken | undefined {
   const { value, interval, bound, budget, note } = finding;
   if (typeof value !== 'number' || interval === null) return undefined;
+  if (![value, ...interval].every(Number.isFinite) || interval[0] > interval[1]) return undefined;
   return {
     value,
     interval,

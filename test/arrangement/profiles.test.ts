@@ -208,6 +208,18 @@ describe('modules that nothing can be built on', () => {
     );
   });
 
+  it.each([
+    ['a recommendation in words', 'recommended-current', { value: 'none' }],
+    ['a recommendation that is no number', 'recommended-current', { value: Number.NaN }],
+    ['a voltage that is no number', 'open-circuit-voltage', { value: Number.NaN }],
+    ['a voltage between no numbers', 'open-circuit-voltage', { interval: [Number.NaN, Number.NaN] }],
+    ['an endless droop', 'droop-resistance', { value: Number.POSITIVE_INFINITY }],
+    ['limits the wrong way round', 'usable-current', { interval: [6, 5] }],
+  ] as const)('are those with %s', (_, name, changed) => {
+    const findings = limitFindings().map((one) => (one.name === name ? { ...one, ...changed } : one));
+    expect(whyNot(madeRecord({ findings }))).toMatch(/^K1: /);
+  });
+
   it('are those of a damaged record, also beside a good one', () => {
     const why = whyNot(madeRecord({ on: '2026-11-10', state: 'damaged' }), madeRecord());
     expect(why).toContain('20261110T091500Z-K1-real-limit is damaged');
