@@ -1,6 +1,7 @@
 import { amps } from '../analysis/in-words.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import { listed } from '../quantity/listed.js';
+import type { Amperes } from '../quantity/quantity.js';
 import type { ModuleProfile } from './module-profile.js';
 import { mostCurrentOf } from './most-current.js';
 import type { ParallelBuild } from './parallel-build.js';
@@ -17,7 +18,7 @@ export function parallelCautions(
     'The modules are fed from the mains: their cases stay closed, all are unplugged before anything is wired, and outputs are proved dead with a meter first, as capacitors hold their charge.',
     'Before outputs are joined, each is proved to have the same polarity and its own voltage: an output joined the wrong way round shorts all the others.',
     ...earthCautions(profiles),
-    ...heatCautions(ballast),
+    ...heatCautions(ballast, Math.max(...others)),
     ballast.kind === 'resistor'
       ? 'What lies between a module and the common joint counts as ballast: make the leads before the joint alike in length and cross-section, and join all of them at one point.'
       : 'Without ballast the leads decide who carries what: make them alike in length and cross-section, and join all of them at one point.',
@@ -59,14 +60,21 @@ function earthCautions(profiles: readonly ModuleProfile[]): readonly string[] {
   ];
 }
 
-function heatCautions(ballast: ParallelBuild['ballast']): readonly string[] {
+/** @param pushed the most that the others push into a module whose output is shorted, through its ballast. */
+function heatCautions(ballast: ParallelBuild['ballast'], pushed: Amperes): readonly string[] {
   if (ballast.kind !== 'resistor') return [];
   const watts = (power: number): string => formatQuantity(power, 'power', { significant: 2 });
-  const { dissipation, dissipationAtLimit, rating } = ballast;
+  const { resistance, tolerance, dissipation, dissipationAtLimit, rating } = ballast;
+  const shorted = pushed ** 2 * resistance * (1 + tolerance);
   return [
     `Ballasts get hot: up to ${watts(dissipation)} in each in use, and ${watts(dissipationAtLimit)} with its module at its limit. Keep them in moving air, away from wires and from what burns.`,
     ...(rating === undefined
       ? ['No usual resistor bears that: take several in parallel or in series, or a smaller value.']
+      : []),
+    ...(rating !== undefined && shorted > rating
+      ? [
+          `The rating of a ballast does not cover its module failing with the output shorted: the others then push ${amps(pushed)} through it, ${watts(shorted)} in a resistor of ${formatQuantity(rating, 'power')}, which burns. Put a fuse into each plus lead that clears at that current, or OR-ing diodes.`,
+        ]
       : []),
   ];
 }
