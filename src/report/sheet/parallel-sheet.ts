@@ -14,6 +14,7 @@ import { banner } from './banner.js';
 import { circuitSection } from './circuit.js';
 import { currentsChart, sharesChart, voltageChart } from './parallel-charts.js';
 import { loadText } from './load-text.js';
+import { numberRow, type NumberRow, numbersSection } from './numbers.js';
 import { cautionsSection, isRefused, partsSection } from './parts.js';
 import { concernsSection, modulesSection, sourcesSection } from './records.js';
 
@@ -57,46 +58,23 @@ function answer(build: ParallelBuild): readonly string[] {
 function numbers(build: ParallelBuild): Markup {
   const { atLoad, load, usable, recommended, sumOfSingles, firstToSaturate: first } = build;
   const at = `at ${loadText(load)}`;
-  const row = (what: string, estimate: Estimate, dimension: Dimension, note = ''): string[] => [
-    what,
-    ...estimateCells(estimate, dimension),
-    note,
-  ];
-  const [imbalance, worst] = estimateCells(atLoad.imbalance, 'ratio');
-  return section(
-    'Numbers',
-    table(
-      'The group as a whole; the limits hold the value with 95 %.',
-      [
-        { heading: 'What', as: 'name' },
-        { heading: 'Value', as: 'number' },
-        { heading: '95 %', as: 'fixed' },
-        { heading: 'Note', as: 'long' },
-      ],
-      [
-        ...(isRefused(build)
-          ? []
-          : [
-              [
-                'Recommended, continuously',
-                roundedDown(recommended.current, 'current'),
-                '',
-                sentence(`Set by ${recommended.setBy}`),
-              ],
-            ]),
-        row('Usable', usable, 'current', notTheSum(sumOfSingles.usable)),
-        row(
-          `${first.module} at its limit`,
-          first.load,
-          'current',
-          `First of them with ${percent(first.probability)}. ${sentence(first.then)}`,
-        ),
-        row(`Voltage ${at}`, atLoad.busVoltage, 'voltage'),
-        [`Imbalance ${at}`, imbalance, worst, 'The upper limit takes every tolerance at its worst.'],
-        ...ballastRows(build),
-      ],
+  return numbersSection('group', isRefused(build) ? undefined : recommended, [
+    numberRow('Usable', usable, 'current', notTheSum(sumOfSingles.usable)),
+    numberRow(
+      `${first.module} at its limit`,
+      first.load,
+      'current',
+      `First of them with ${percent(first.probability)}. ${sentence(first.then)}`,
     ),
-  );
+    numberRow(`Voltage ${at}`, atLoad.busVoltage, 'voltage'),
+    numberRow(
+      `Imbalance ${at}`,
+      atLoad.imbalance,
+      'ratio',
+      'The upper limit takes every tolerance at its worst.',
+    ),
+    ...ballastRows(build),
+  ]);
 }
 
 /** That nobody takes the sum of labels for the group. */
@@ -104,7 +82,7 @@ function notTheSum(sum: number): string {
   return `One by one, added up, they would hold ${roundedDown(sum, 'current')}; the group does not.`;
 }
 
-function ballastRows({ ballast, wish }: ParallelBuild): readonly (readonly string[])[] {
+function ballastRows({ ballast, wish }: ParallelBuild): readonly NumberRow[] {
   switch (ballast.kind) {
     case 'none':
       return [['Ballast', 'none', '', 'Joined directly they share as wished.']];

@@ -1,7 +1,5 @@
-import type { Estimate } from '../../arrangement/build.js';
 import type { Rail, SeriesBuild } from '../../arrangement/series-build.js';
 import { listed } from '../../quantity/listed.js';
-import type { Dimension } from '../../quantity/quantity.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { brief } from '../build/brief.js';
 import { estimateCells, estimateInWords } from '../build/estimate-text.js';
@@ -12,6 +10,7 @@ import { table } from '../page/table.js';
 import { banner } from './banner.js';
 import { circuitSection } from './circuit.js';
 import { loadText } from './load-text.js';
+import { numberRow, numbersSection } from './numbers.js';
 import { cautionsSection, isRefused, partsSection } from './parts.js';
 import { concernsSection, modulesSection, sourcesSection } from './records.js';
 import { curveChart, railsChart } from './series-charts.js';
@@ -58,41 +57,14 @@ function answer({
 
 function numbers(build: SeriesBuild): Markup {
   const { openVoltage, voltageAtLoad, usable, recommended, load, weakest } = build;
-  const row = (what: string, estimate: Estimate, dimension: Dimension, note = ''): string[] => [
-    what,
-    ...estimateCells(estimate, dimension),
-    note,
-  ];
   const who = weakest.sure
     ? `${weakest.module} is the weakest.`
     : `${weakest.module} is most likely the weakest.`;
-  return section(
-    'Numbers',
-    table(
-      'The string as a whole; the limits hold the value with 95 %.',
-      [
-        { heading: 'What', as: 'name' },
-        { heading: 'Value', as: 'number' },
-        { heading: '95 %', as: 'fixed' },
-        { heading: 'Note', as: 'long' },
-      ],
-      [
-        ...(isRefused(build)
-          ? []
-          : [
-              [
-                'Recommended, continuously',
-                roundedDown(recommended.current, 'current'),
-                '',
-                sentence(`Set by ${recommended.setBy}`),
-              ],
-            ]),
-        row('Usable', usable, 'current', who),
-        row('Voltage at no load', openVoltage, 'voltage', touch(build)),
-        row(`Voltage at ${loadText(load)}`, voltageAtLoad, 'voltage'),
-      ],
-    ),
-  );
+  return numbersSection('string', isRefused(build) ? undefined : recommended, [
+    numberRow('Usable', usable, 'current', who),
+    numberRow('Voltage at no load', openVoltage, 'voltage', touch(build)),
+    numberRow(`Voltage at ${loadText(load)}`, voltageAtLoad, 'voltage'),
+  ]);
 }
 
 function touch({ beyondTouchable }: SeriesBuild): string {
