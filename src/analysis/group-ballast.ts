@@ -92,12 +92,16 @@ export function whyNoBallast(
   outcome: Extract<BallastOutcome, { kind: 'too-coarse' | 'too-costly' }>,
   { tolerance, asked }: { readonly tolerance: Ratio; readonly asked: string },
 ): string {
-  // Three digits: what misses the limit by little must not read as if it met it.
-  const left = formatQuantity(outcome.imbalance, 'ratio', { significant: 3 });
+  const left = formatQuantity(roundedUp(outcome.imbalance), 'ratio', { significant: 3 });
   if (outcome.kind === 'too-coarse') {
     return `resistors of ± ${givenPercent(tolerance)} alone may unbalance them by ${left} ${asked}: take closer ones`;
   }
   return outcome.largest === 0
     ? `not even the smallest resistor leaves enough voltage, ${asked}`
     : `${formatQuantity(outcome.largest, 'resistance')}, more than which would cost a tenth of the voltage, may still leave ${left} ${asked}: the modules are too unlike, choose others`;
+}
+
+/** To a tenth of a percent, and never down: what misses the limit by little must not read as if it met it. */
+function roundedUp(imbalance: Ratio): Ratio {
+  return Math.ceil(imbalance * 1000 - 1e-9) / 1000;
 }

@@ -54,11 +54,11 @@ function switchedOff(
   const held = roundedDown(usable, 'current');
   switch (rest) {
     case 'carries-it':
-      return `With ${name} switched off, ${names} ${carry} ${amps(load)} and ${are} still within the ${lasting} recommended for that.`;
+      return `With ${name} switched off, ${names} ${carry} ${roundedDown(load, 'current')} and ${are} still within the ${lasting} recommended for that.`;
     case 'overloaded':
-      return `With ${name} switched off, ${names} ${hold} ${amps(load)} for a while only: ${lasting} is recommended for that.`;
+      return `With ${name} switched off, ${names} ${hold} ${roundedDown(load, 'current')} for a while only: ${lasting} is recommended for that.`;
     case 'fails':
-      return `With ${name} switched off, the group fails: ${names} ${hold} ${held}, and ${amps(load)} is asked for. Take the load down to ${lasting} first.`;
+      return `With ${name} switched off, the group fails: ${names} ${hold} ${held}, and the load is ${roundedDown(load, 'current')}. Take the load down to ${lasting} first.`;
   }
 }
 

@@ -156,7 +156,7 @@ describe('two bricks by hand', patience, () => {
     expect(first).toMatchObject({ module: 'K1', recommended: 4, rest: 'fails' });
     expect(first?.usable).toBeCloseTo(5.2 - 1.96 * 0.008, 2);
     expect(first?.sentences[0]).toBe(
-      'With K1 switched off, the group fails: K2 holds 5.18 A, and 6.00 A is asked for. Take the load down to 4.00 A first.',
+      'With K1 switched off, the group fails: K2 holds 5.18 A, and the load is 6.00 A. Take the load down to 4.00 A first.',
     );
     expect(first?.sentences.join(' ')).toMatch(/no record shows/);
     // K1 pushes its 5.3 A and what is uncertain of it through 105 mΩ.
