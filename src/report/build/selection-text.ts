@@ -1,4 +1,4 @@
-import type { Assignment, SelectedSupply, Selection } from '../../arrangement/selection.js';
+import type { Assignment, Selection } from '../../arrangement/selection.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
 import { listed } from '../../quantity/listed.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
@@ -11,18 +11,21 @@ import { cautionsText, partsText } from './parts-text.js';
 import { bullets, prose, section, sentence, text } from './prose.js';
 import { concernsText, sourcesText } from './records-text.js';
 import { standingText } from './standing-text.js';
+import { firstOnly, inSigns } from './supply-signs.js';
 
 /** Which modules of a drawer to put together, for a terminal or a text file. */
 export function selectionAsText(worked: Selection, style: Style): string {
   const selection = printableData(worked);
   const { best, next } = selection;
   const chosen = chosenOf(selection);
+  const only = firstOnly(selection);
   return text([
     headingText(title(selection), chosen, style),
     answer(selection, style),
     best === undefined ? '' : assignmentText('Best', best, style),
     next === undefined ? '' : assignmentText('Next best', next, style),
     restText(selection, style),
+    only === undefined ? '' : prose(sentence(only)),
     partsText(selection, style),
     cautionsText(selection, style),
     concernsText(selection, style),
@@ -60,13 +63,6 @@ function answer(selection: Selection, style: Style): string {
 function feeds({ supplies, recommended }: Assignment): string {
   const each = supplies.length === 1 ? 'feeds' : 'each feed';
   return `${listed(supplies.map(inSigns))} ${each} up to ${roundedDown(recommended, 'current')} continuously`;
-}
-
-/** `K1 ∥ K2`, `(K1 ∥ K2) + (K3 ∥ K4)`, the lowest first. */
-function inSigns({ groups }: SelectedSupply): string {
-  const signs = groups.map(({ modules }) => modules.join(' ∥ '));
-  if (signs.length === 1) return signs[0] ?? '';
-  return signs.map((each) => (each.includes('∥') ? `(${each})` : each)).join(' + ');
 }
 
 function assignmentText(

@@ -1,11 +1,12 @@
-import type { Assignment, SelectedSupply, Selection } from '../../arrangement/selection.js';
+import type { Assignment, Selection } from '../../arrangement/selection.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
 import { listed } from '../../quantity/listed.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { brief } from '../build/brief.js';
 import { sentence } from '../build/prose.js';
+import { firstOnly, inSigns } from '../build/supply-signs.js';
 import { barChart } from '../chart/bar-chart.js';
-import type { Markup } from '../page/markup.js';
+import { element, type Markup } from '../page/markup.js';
 import { bullets, section, type Sheet } from '../page/page.js';
 import { table } from '../page/table.js';
 import { banner } from './banner.js';
@@ -17,6 +18,7 @@ import { concernsSection, modulesSection, sourcesSection } from './records.js';
 /** Which modules of a drawer to put together. */
 export function selectionSheet(build: Selection): Sheet {
   const { best, next, circuit } = build;
+  const only = firstOnly(build);
   return {
     kind: 'Build sheet · a choice out of a drawer',
     title: `${build.wish.supplies === 1 ? 'One supply' : `${build.wish.supplies} supplies`}: ${wished(build)}`,
@@ -28,6 +30,7 @@ export function selectionSheet(build: Selection): Sheet {
           comparison(best, next),
           assignment('The best.', best),
           next && assignment('The next best.', next),
+          only && element('p', {}, sentence(only)),
         ),
       circuit && circuitSection(build, circuit, build.modules),
       partsSection(build),
@@ -53,13 +56,6 @@ function answer({ best, margin, standing }: Selection): readonly string[] {
     `${listed(best.supplies.map(inSigns))} ${each} up to ${roundedDown(best.recommended, 'current')} continuously`,
     ...(margin === undefined ? [] : [margin.sentence]),
   ];
-}
-
-/** `K1 ∥ K2`, `(K1 ∥ K2) + (K3 ∥ K4)`, the lowest first. */
-function inSigns({ groups }: SelectedSupply): string {
-  const signs = groups.map(({ modules }) => modules.join(' ∥ '));
-  if (signs.length === 1) return signs[0] ?? '';
-  return signs.map((each) => (each.includes('∥') ? `(${each})` : each)).join(' + ');
 }
 
 /** The current of each supply of the best and of the next best, side by side. */

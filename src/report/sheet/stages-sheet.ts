@@ -54,7 +54,9 @@ function answer({ standing, wish, guaranteed: points }: StagedBuild): readonly s
 
 function guaranteed(build: StagedBuild): Markup {
   return section(
-    'What it is guaranteed to feed',
+    build.standing.kind === 'may-be-built'
+      ? 'What it is guaranteed to feed'
+      : 'By these numbers alone it would feed',
     guaranteedChart(build),
     table(
       'As the output rises.',

@@ -55,6 +55,17 @@ describe.each(Object.entries(makers))('the build sheet of %s', (_, make) => {
   });
 });
 
+it('of several supplies it says which one is drawn, and that the others may need other parts', () => {
+  const page = buildPage(madeSelection({ standing: { kind: 'may-be-built' } }), made);
+  expect(page).toMatch(/are those of [^.]* only: other modules may ask for other ratings/);
+});
+
+it('nothing is called guaranteed of a staged supply that may not be built', () => {
+  expect(buildPage(madeStages({ standing: { kind: 'may-be-built' } }), made)).toContain('guaranteed to feed');
+  expect(buildPage(madeStages({ standing: refused }), made)).not.toContain('guaranteed to feed');
+  expect(buildPage(madeStages({ standing: open }), made)).not.toContain('guaranteed to feed');
+});
+
 it('a load above what is recommended is said to be too much, whatever else holds', () => {
   const page = buildPage(madeParallel({ load: { current: 11, from: 'asked-for' } }), made);
   expect(page).toContain('>Too little for the load asked for<');

@@ -1,0 +1,15 @@
+import type { SelectedSupply, Selection } from '../../arrangement/selection.js';
+
+/** `K1 ∥ K2`, `(K1 ∥ K2) + (K3 ∥ K4)`, the lowest first. */
+export function inSigns({ groups }: SelectedSupply): string {
+  const signs = groups.map(({ modules }) => modules.join(' ∥ '));
+  if (signs.length === 1) return signs[0] ?? '';
+  return signs.map((each) => (each.includes('∥') ? `(${each})` : each)).join(' + ');
+}
+
+/** Of several supplies, which one the circuit, parts and cautions are of: another one's parts may have to bear more. */
+export function firstOnly({ best, standing }: Selection): string | undefined {
+  const [first, ...others] = best?.supplies ?? [];
+  if (first === undefined || others.length === 0 || standing.kind !== 'may-be-built') return undefined;
+  return `circuit, parts and cautions are those of ${inSigns(first)} only: other modules may ask for other ratings, so have each further supply worked out from the records of its own modules`;
+}
