@@ -236,7 +236,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
 
   command(
     'schema <kind>',
-    'the JSON Schema of a kind of file (module, bench, driver, procedure, tolerance), for editors',
+    'the JSON Schema of a kind of file (module, bench, driver, procedure, tolerance, stages), for editors',
     'railproof schema procedure > procedure.schema.json',
   ).action(async (kind: string) => {
     const { schema } = await import('./schema.js');

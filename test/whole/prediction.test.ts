@@ -54,10 +54,10 @@ describe('shares that are predicted from modules measured alone', () => {
     );
   });
 
-  it.runIf(seeds >= 20)('hold what two modules show in at least nine pairs of ten', () => {
+  it('hold what two modules show in at least nine pairs of ten', () => {
     const pairs = groups.filter((shares) => shares.length === 2);
     const missed = pairs.filter((shares) => !shares.every(isHit));
-    expect(missed.length, JSON.stringify(missed)).toBeLessThanOrEqual(0.1 * pairs.length);
+    expect(missed.length, JSON.stringify(missed)).toBeLessThanOrEqual(Math.max(1, 0.1 * pairs.length));
   });
 
   // What was seen: 0.02 to 0.034 with ballasts of 5 %, 0.004 to 0.008 with 1 %.
