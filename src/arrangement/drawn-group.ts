@@ -1,4 +1,4 @@
-import type { DrawnBranch, PastLimit } from '../circuit/share-walk.js';
+import type { DrawnBranch, PastLimit } from '../circuit/drawn-branch.js';
 import type { Ratio } from '../quantity/quantity.js';
 import type { LatinHypercube } from '../statistics/latin-hypercube.js';
 import { linesOf } from './added-up.js';

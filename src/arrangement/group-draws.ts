@@ -1,7 +1,8 @@
 import { type ClimbedPoint, type ClimbingBranch, climb } from '../circuit/group-climb.js';
 import { imbalanceOf } from '../circuit/imbalance.js';
 import type { CurveLimit } from '../circuit/module-curve.js';
-import { type DrawnBranch, ShareWalk, type WalkCorner, type WalkEnd } from '../circuit/share-walk.js';
+import type { DrawnBranch } from '../circuit/drawn-branch.js';
+import { ShareWalk, type WalkCorner, type WalkEnd } from '../circuit/share-walk.js';
 import type { Amperes, Ratio } from '../quantity/quantity.js';
 import { coverageInterval, type DrawnInterval, medianOf } from '../statistics/coverage-interval.js';
 import { usualSag } from './drawn-group.js';

@@ -1,5 +1,6 @@
 import { amps, givenPercent, percent } from '../analysis/in-words.js';
-import type { DrawnBranch, WalkCorner } from '../circuit/share-walk.js';
+import type { DrawnBranch } from '../circuit/drawn-branch.js';
+import type { WalkCorner } from '../circuit/share-walk.js';
 import type { Amperes } from '../quantity/quantity.js';
 import { usualSag } from './drawn-group.js';
 import { bestPoints, extentOf, mostLoaded, wayUp } from './group-draws.js';

@@ -1,4 +1,5 @@
-import type { DrawnBranch, WalkCorner } from '../circuit/share-walk.js';
+import type { DrawnBranch } from '../circuit/drawn-branch.js';
+import type { WalkCorner } from '../circuit/share-walk.js';
 import type { Amperes } from '../quantity/quantity.js';
 import type { DrawnInterval } from '../statistics/coverage-interval.js';
 import type { Band, Estimate } from './build.js';
