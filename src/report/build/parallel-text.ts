@@ -1,12 +1,11 @@
 import type { ParallelBuild } from '../../arrangement/parallel-build.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
 import type { Dimension } from '../../quantity/quantity.js';
-import { listed } from '../../quantity/listed.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { alignTable } from '../align.js';
 import { printableData } from '../printable.js';
 import type { Style } from '../style.js';
-import { brief, loadInWords } from './brief.js';
+import { brief, chance, loadInWords, namesOf } from './brief.js';
 import { ballastText } from './ballast-text.js';
 import { estimateCells, estimateInWords } from './estimate-text.js';
 import { headingText } from './heading-text.js';
@@ -32,10 +31,6 @@ export function parallelAsText(worked: ParallelBuild, style: Style): string {
     concernsText(build, style),
     sourcesText(build.modules, style),
   ]);
-}
-
-function namesOf({ modules }: ParallelBuild): string {
-  return listed(modules.map(({ name }) => name));
 }
 
 function answer(build: ParallelBuild, style: Style): string {
@@ -66,7 +61,7 @@ function setBy({ recommended }: ParallelBuild): string {
 
 /** Who meets the limit first, and what comes of it. */
 function inTurn({ firstToSaturate: { module, load, probability, then } }: ParallelBuild): string {
-  const sure = probability > 0.95 ? '' : `, with a probability of ${percent(probability)}`;
+  const sure = probability > 0.95 ? '' : `, with a probability of ${chance(probability)}`;
   return `${module} reaches its limit first, at a load of ${estimateInWords(load, 'current')}${sure}. ${then}`;
 }
 
@@ -137,9 +132,4 @@ function failuresText(build: ParallelBuild, style: Style): string {
     style,
     `at ${loadInWords(build.load)}`,
   );
-}
-
-/** Never all and never nothing: nothing measured is that sure. */
-function percent(probability: number): string {
-  return `${Math.min(99, Math.max(1, Math.round(100 * probability)))} %`;
 }

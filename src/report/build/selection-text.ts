@@ -11,7 +11,7 @@ import { cautionsText, partsText } from './parts-text.js';
 import { bullets, prose, section, sentence, text } from './prose.js';
 import { concernsText, sourcesText } from './records-text.js';
 import { standingText } from './standing-text.js';
-import { firstOnly, inSigns } from './supply-signs.js';
+import { firstOnly, inSigns, wished } from './supply-signs.js';
 
 /** Which modules of a drawer to put together, for a terminal or a text file. */
 export function selectionAsText(worked: Selection, style: Style): string {
@@ -43,12 +43,6 @@ function chosenOf({ best, modules }: Selection): Selection['modules'] {
 function title({ wish }: Selection): string {
   const supplies = wish.supplies === 1 ? 'One supply' : `${wish.supplies} supplies`;
   return `${supplies} out of a drawer: ${wished(wish)}`;
-}
-
-function wished({ group, stack, supplies }: Selection['wish']): string {
-  const each = supplies === 1 ? '' : ' each';
-  if (stack === 1) return group === 1 ? `one module${each}` : `${group} modules${each} side by side`;
-  return group === 1 ? `${stack} modules${each} in a stack` : `${stack} groups of ${group}${each} in a stack`;
 }
 
 function answer(selection: Selection, style: Style): string {

@@ -1,11 +1,10 @@
 import type { Rail, ReverseDiode, SeriesBuild } from '../../arrangement/series-build.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
-import { listed } from '../../quantity/listed.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { alignTable } from '../align.js';
 import { printableData } from '../printable.js';
 import type { Style } from '../style.js';
-import { brief, briefDigits, loadInWords } from './brief.js';
+import { brief, briefDigits, loadInWords, namesOf } from './brief.js';
 import { between, estimateCells, estimateInWords, valueAt } from './estimate-text.js';
 import { headingText } from './heading-text.js';
 import { cautionsText, partsText } from './parts-text.js';
@@ -32,10 +31,6 @@ export function seriesAsText(worked: SeriesBuild, style: Style): string {
     concernsText(build, style),
     sourcesText(build.modules, style),
   ]);
-}
-
-function namesOf({ modules }: SeriesBuild): string {
-  return listed(modules.map(({ name }) => name));
 }
 
 function answer(build: SeriesBuild, style: Style): string {

@@ -12,6 +12,7 @@ import { headingText } from './heading-text.js';
 import { cautionsText, partsText } from './parts-text.js';
 import { prose, section, stopped, text } from './prose.js';
 import { concernsText, sourcesText } from './records-text.js';
+import { spanOf, stretchesOf } from './stretches.js';
 import { standingText } from './standing-text.js';
 
 /** A staged supply, for a terminal or a text file: the answer first, then what it rests on. */
@@ -57,21 +58,13 @@ const limits: Readonly<Record<Guaranteed['setBy'], string>> = {
   'linear-stage': "the linear stage's own limit",
 };
 
-/** Stretches of the output over which the same arrangement feeds it and the same thing sets the current. */
 function guaranteedText(build: StagedBuild, style: Style): string {
-  const stretches: { from: number; to: number; first: Guaranteed; last: Guaranteed }[] = [];
-  for (const { output, rising } of build.guaranteed) {
-    const open = stretches.at(-1);
-    if (open?.last.arrangement === rising.arrangement && open.last.setBy === rising.setBy) {
-      open.to = output;
-      open.last = rising;
-    } else stretches.push({ from: output, to: output, first: rising, last: rising });
-  }
-  const rows = stretches.map(({ from, to, first, last }) => [
+  const stretches = stretchesOf(build.guaranteed, ({ rising }) => rising);
+  const rows = stretches.map(({ from, to, least, most, of }) => [
     from === to ? briefDigits(from) : `${briefDigits(from)} to ${briefDigits(to)}`,
-    spanOf(first.current, last.current),
-    first.arrangement,
-    limits[first.setBy],
+    spanOf({ least, most }),
+    of.arrangement,
+    limits[of.setBy],
   ]);
   const head = ['output, V', 'at least', 'from', 'set by'];
   return section(
@@ -82,11 +75,6 @@ function guaranteedText(build: StagedBuild, style: Style): string {
     style,
     'output rising; coming down it may be less',
   );
-}
-
-function spanOf(from: number, to: number): string {
-  const [first, last] = [roundedDown(from, 'current'), roundedDown(to, 'current')];
-  return first === last ? first : `${first} to ${last}`;
 }
 
 function arrangementsText({ arrangements }: StagedBuild, style: Style): string {

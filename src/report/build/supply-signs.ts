@@ -13,3 +13,10 @@ export function firstOnly({ best, standing }: Selection): string | undefined {
   if (first === undefined || others.length === 0 || standing.kind !== 'may-be-built') return undefined;
   return `circuit, parts and cautions are those of ${inSigns(first)} only: other modules may ask for other ratings, so have each further supply worked out from the records of its own modules`;
 }
+
+/** `2 modules side by side`. */
+export function wished({ group, stack, supplies }: Selection['wish']): string {
+  const each = supplies === 1 ? '' : ' each';
+  if (stack === 1) return group === 1 ? `one module${each}` : `${group} modules${each} side by side`;
+  return group === 1 ? `${stack} modules${each} in a stack` : `${stack} groups of ${group}${each} in a stack`;
+}

@@ -3,11 +3,10 @@ import type { ParallelBuild } from '../../arrangement/parallel-build.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { type ChartLine, lineChart } from '../chart/line-chart.js';
 import type { VerticalMark } from '../chart/marks.js';
-import { brief } from '../build/brief.js';
+import { brief, loadInWords } from '../build/brief.js';
 import { estimateInWords } from '../build/estimate-text.js';
 import type { Markup } from '../page/markup.js';
 import { figure } from './figure.js';
-import { loadText } from './load-text.js';
 import { isRefused } from './parts.js';
 
 const load = { label: 'Load of the group', dimension: 'current' } as const;
@@ -39,7 +38,7 @@ export function sharesChart(build: ParallelBuild): Markup {
     lineChart({
       id: 'shares',
       title,
-      description: `Each module's part of the load over the load. At ${loadText(build.load)}: ${said.join(', ')}.`,
+      description: `Each module's part of the load over the load. At ${loadInWords(build.load)}: ${said.join(', ')}.`,
       x: load,
       y: { label: 'Share of the load', dimension: 'ratio', ...shareRange(lines) },
       lines,
@@ -90,7 +89,7 @@ export function voltageChart(build: ParallelBuild): Markup {
     lineChart({
       id: 'bus',
       title,
-      description: `Its voltage over its load: ${estimateInWords(atLoad.busVoltage, 'voltage')} at ${loadText(build.load)}.`,
+      description: `Its voltage over its load: ${estimateInWords(atLoad.busVoltage, 'voltage')} at ${loadInWords(build.load)}.`,
       x: load,
       y: { label: 'Voltage', dimension: 'voltage' },
       lines: [lineOf('group', sharing.loads, sharing.busVoltage)],
@@ -112,7 +111,7 @@ function marksOf(build: ParallelBuild): readonly VerticalMark[] {
       ? []
       : [{ at: recommended.current, label: `recommended ${roundedDown(recommended.current, 'current')}` }]),
     { at: usable.value, label: `usable ${brief(usable.value, 'current')}` },
-    ...(at.from === 'asked-for' ? [{ at: at.current, label: `asked for ${loadText(at)}` }] : []),
+    ...(at.from === 'asked-for' ? [{ at: at.current, label: `asked for ${loadInWords(at)}` }] : []),
   ].filter((mark) => mark.at <= most * 1.001);
 }
 

@@ -4,7 +4,7 @@ import { formatQuantity } from '../../quantity/format-quantity.js';
 import { listed } from '../../quantity/listed.js';
 import type { Dimension } from '../../quantity/quantity.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
-import { brief } from '../build/brief.js';
+import { brief, chance, loadInWords, namesOf } from '../build/brief.js';
 import { estimateCells, estimateInWords } from '../build/estimate-text.js';
 import { sentence } from '../build/prose.js';
 import { element, type Markup } from '../page/markup.js';
@@ -13,7 +13,6 @@ import { table } from '../page/table.js';
 import { banner } from './banner.js';
 import { circuitSection } from './circuit.js';
 import { currentsChart, sharesChart, voltageChart } from './parallel-charts.js';
-import { loadText } from './load-text.js';
 import { numberRow, type NumberRow, numbersSection } from './numbers.js';
 import { cautionsSection, isRefused, partsSection } from './parts.js';
 import { concernsSection, modulesSection, sourcesSection } from './records.js';
@@ -39,15 +38,13 @@ export function parallelSheet(build: ParallelBuild): Sheet {
   };
 }
 
-function namesOf({ modules }: ParallelBuild): string {
-  return listed(modules.map(({ name }) => name));
-}
-
 function answer(build: ParallelBuild): readonly string[] {
   const { standing, recommended, load, firstToSaturate: first } = build;
   if (standing.kind !== 'may-be-built') return [];
   const asked =
-    load.from === 'asked-for' && load.current > recommended.current ? [`${loadText(load)} is asked for`] : [];
+    load.from === 'asked-for' && load.current > recommended.current
+      ? [`${loadInWords(load)} is asked for`]
+      : [];
   return [
     `Together they feed up to ${roundedDown(recommended.current, 'current')} continuously`,
     ...asked,
@@ -57,14 +54,14 @@ function answer(build: ParallelBuild): readonly string[] {
 
 function numbers(build: ParallelBuild): Markup {
   const { atLoad, load, usable, recommended, sumOfSingles, firstToSaturate: first } = build;
-  const at = `at ${loadText(load)}`;
+  const at = `at ${loadInWords(load)}`;
   return numbersSection('group', isRefused(build) ? undefined : recommended, [
     numberRow('Usable', usable, 'current', notTheSum(sumOfSingles.usable)),
     numberRow(
       `${first.module} at its limit`,
       first.load,
       'current',
-      `First of them with ${percent(first.probability)}. ${sentence(first.then)}`,
+      `First of them with ${chance(first.probability)}. ${sentence(first.then)}`,
     ),
     numberRow(`Voltage ${at}`, atLoad.busVoltage, 'voltage'),
     numberRow(
@@ -122,7 +119,7 @@ function sharing(build: ParallelBuild): Markup {
   return section(
     'How they share the load',
     table(
-      `At ${loadText(load)}, ${from}.`,
+      `At ${loadInWords(load)}, ${from}.`,
       columns,
       modules.map(({ name }, index) => [
         name,
@@ -167,7 +164,7 @@ function failures({ failures: each, load }: ParallelBuild): Markup | undefined {
   return section(
     'When one fails or is switched off',
     table(
-      `What the others can do then; the load is ${loadText(load)}.`,
+      `What the others can do then; the load is ${loadInWords(load)}.`,
       [
         { heading: 'Without', as: 'name' },
         { heading: 'The others' },
@@ -201,9 +198,4 @@ function alike(
     else before.modules.push(module);
   }
   return [...said.values()];
-}
-
-/** Never all and never nothing: nothing measured is that sure. */
-function percent(probability: number): string {
-  return `${Math.min(99, Math.max(1, Math.round(100 * probability)))} %`;
 }

@@ -4,7 +4,7 @@ import { listed } from '../../quantity/listed.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { brief } from '../build/brief.js';
 import { sentence } from '../build/prose.js';
-import { firstOnly, inSigns } from '../build/supply-signs.js';
+import { firstOnly, inSigns, wished } from '../build/supply-signs.js';
 import { barChart } from '../chart/bar-chart.js';
 import { element, type Markup } from '../page/markup.js';
 import { bullets, section, type Sheet } from '../page/page.js';
@@ -21,7 +21,7 @@ export function selectionSheet(build: Selection): Sheet {
   const only = firstOnly(build);
   return {
     kind: 'Build sheet · a choice out of a drawer',
-    title: `${build.wish.supplies === 1 ? 'One supply' : `${build.wish.supplies} supplies`}: ${wished(build)}`,
+    title: `${build.wish.supplies === 1 ? 'One supply' : `${build.wish.supplies} supplies`}: ${wished(build.wish)}`,
     answer: banner(build, answer(build)),
     sections: [
       best &&
@@ -41,12 +41,6 @@ export function selectionSheet(build: Selection): Sheet {
       sourcesSection(build.modules),
     ],
   };
-}
-
-function wished({ wish: { group, stack, supplies } }: Selection): string {
-  const each = supplies === 1 ? '' : ' each';
-  if (stack === 1) return group === 1 ? `one module${each}` : `${group} modules${each} side by side`;
-  return group === 1 ? `${stack} modules${each} in a stack` : `${stack} groups of ${group}${each} in a stack`;
 }
 
 function answer({ best, margin, standing }: Selection): readonly string[] {

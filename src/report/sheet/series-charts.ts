@@ -1,12 +1,11 @@
 import type { SeriesBuild } from '../../arrangement/series-build.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
-import { brief } from '../build/brief.js';
+import { brief, loadInWords } from '../build/brief.js';
 import { estimateInWords } from '../build/estimate-text.js';
 import { barChart } from '../chart/bar-chart.js';
 import { lineChart } from '../chart/line-chart.js';
 import type { Markup } from '../page/markup.js';
 import { figure } from './figure.js';
-import { loadText } from './load-text.js';
 import { isRefused } from './parts.js';
 
 /** Beyond which a direct voltage is no longer safe to touch (ES1 of IEC 62368-1). */
@@ -21,7 +20,7 @@ export function curveChart(build: SeriesBuild): Markup {
     lineChart({
       id: 'curve',
       title,
-      description: `${estimateInWords(openVoltage, 'voltage')} at no load, ${estimateInWords(voltageAtLoad, 'voltage')} at ${loadText(load)}.`,
+      description: `${estimateInWords(openVoltage, 'voltage')} at no load, ${estimateInWords(voltageAtLoad, 'voltage')} at ${loadInWords(load)}.`,
       x: { label: 'Load of the string', dimension: 'current' },
       y: { label: 'Voltage', dimension: 'voltage' },
       lines: [

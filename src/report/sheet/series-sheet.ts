@@ -1,7 +1,6 @@
 import type { Rail, SeriesBuild } from '../../arrangement/series-build.js';
-import { listed } from '../../quantity/listed.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
-import { brief } from '../build/brief.js';
+import { brief, loadInWords, namesOf } from '../build/brief.js';
 import { estimateCells, estimateInWords } from '../build/estimate-text.js';
 import { sentence } from '../build/prose.js';
 import { element, type Markup } from '../page/markup.js';
@@ -9,7 +8,6 @@ import { bullets, section, type Sheet } from '../page/page.js';
 import { table } from '../page/table.js';
 import { banner } from './banner.js';
 import { circuitSection } from './circuit.js';
-import { loadText } from './load-text.js';
 import { numberRow, numbersSection } from './numbers.js';
 import { cautionsSection, isRefused, partsSection } from './parts.js';
 import { concernsSection, modulesSection, sourcesSection } from './records.js';
@@ -19,7 +17,7 @@ import { curveChart, railsChart } from './series-charts.js';
 export function seriesSheet(build: SeriesBuild): Sheet {
   return {
     kind: 'Build sheet · modules one upon the other',
-    title: `${listed(build.modules.map(({ name }) => name))} in series`,
+    title: `${namesOf(build)} in series`,
     answer: banner(build, answer(build)),
     sections: [
       numbers(build),
@@ -46,7 +44,9 @@ function answer({
 }: SeriesBuild): readonly string[] {
   if (standing.kind !== 'may-be-built') return [];
   const asked =
-    load.from === 'asked-for' && load.current > recommended.current ? [`${loadText(load)} is asked for`] : [];
+    load.from === 'asked-for' && load.current > recommended.current
+      ? [`${loadInWords(load)} is asked for`]
+      : [];
   return [
     `The string feeds up to ${roundedDown(recommended.current, 'current')} continuously, at ${estimateInWords(voltageAtLoad, 'voltage')}`,
     ...asked,
@@ -63,7 +63,7 @@ function numbers(build: SeriesBuild): Markup {
   return numbersSection('string', isRefused(build) ? undefined : recommended, [
     numberRow('Usable', usable, 'current', who),
     numberRow('Voltage at no load', openVoltage, 'voltage', touch(build)),
-    numberRow(`Voltage at ${loadText(load)}`, voltageAtLoad, 'voltage'),
+    numberRow(`Voltage at ${loadInWords(load)}`, voltageAtLoad, 'voltage'),
   ]);
 }
 

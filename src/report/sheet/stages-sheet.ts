@@ -13,7 +13,7 @@ import { contactsTable, movements } from './contacts.js';
 import { cautionsSection, isRefused, partsSection, provisional } from './parts.js';
 import { concernsSection, modulesSection, sourcesSection } from './records.js';
 import { dissipationMap, guaranteedChart } from './stages-charts.js';
-import { limits, stretchesOf } from './stretches.js';
+import { limits, spanOf, stretchesOf } from '../build/stretches.js';
 
 /** A supply whose input follows its output. */
 export function stagesSheet(build: StagedBuild): Sheet {
@@ -68,17 +68,12 @@ function guaranteed(build: StagedBuild): Markup {
       ],
       stretchesOf(build.guaranteed, ({ rising }) => rising).map(({ from, to, least, most, of }) => [
         from === to ? brief(from, 'voltage') : `${brief(from, 'voltage')} to ${brief(to, 'voltage')}`,
-        spanOf(least, most),
+        spanOf({ least, most }),
         of.arrangement,
         limits[of.setBy],
       ]),
     ),
   );
-}
-
-function spanOf(least: number, most: number): string {
-  const [low, high] = [roundedDown(least, 'current'), roundedDown(most, 'current')];
-  return low === high ? low : `${low} to ${high}`;
 }
 
 function arrangements(build: StagedBuild): Markup {

@@ -1,5 +1,6 @@
 import type { Guaranteed, GuaranteedPoint } from '../../arrangement/staged-build.js';
 import type { Amperes, Volts } from '../../quantity/quantity.js';
+import { roundedDown } from '../../quantity/rounded-down.js';
 
 /** A stretch of the output over which one arrangement feeds it and one thing sets the current. */
 export interface Stretch {
@@ -29,6 +30,12 @@ export function stretchesOf(
     }
     return stretches;
   }, []);
+}
+
+/** From the least to the most that is fed over a stretch, never rounded up; one number where they are the same. */
+export function spanOf({ least, most }: Pick<Stretch, 'least' | 'most'>): string {
+  const [low, high] = [roundedDown(least, 'current'), roundedDown(most, 'current')];
+  return low === high ? low : `${low} to ${high}`;
 }
 
 export const limits: Readonly<Record<Guaranteed['setBy'], string>> = {
