@@ -3,7 +3,8 @@ import type { ParallelBuild } from '../../arrangement/parallel-build.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
 import { alignTable } from '../align.js';
 import type { Style } from '../style.js';
-import { brief } from './brief.js';
+import { brief, loadInWords } from './brief.js';
+import { estimateInWords } from './estimate-text.js';
 import { prose, section, sentence } from './prose.js';
 
 /** The resistor in series with each module: what it is, what it bears, what to buy and what it costs. */
@@ -35,4 +36,16 @@ function rowsOf(ballast: ResistorChosen): string[][] {
     ['', brief(dissipationAtLimit, 'power'), 'with its module at its limit'],
     ['cost', brief(voltageCost, 'voltage'), 'across it at full load'],
   ];
+}
+
+/** How unevenly they would share without ballast: at the load, or where they fail before it. */
+export function imbalanceWithout({
+  withoutBallast: without,
+  load,
+}: Pick<ParallelBuild, 'withoutBallast' | 'load'>): string {
+  const at =
+    without.load < load.current
+      ? `Just before they fail, at ${brief(without.load, 'current')},`
+      : `At ${loadInWords(load)}`;
+  return `${at} the imbalance would be ${estimateInWords(without.imbalance, 'ratio')}`;
 }

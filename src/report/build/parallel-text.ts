@@ -5,8 +5,8 @@ import { roundedDown } from '../../quantity/rounded-down.js';
 import { alignTable } from '../align.js';
 import { printableData } from '../printable.js';
 import type { Style } from '../style.js';
-import { brief, chance, loadInWords, namesOf } from './brief.js';
-import { ballastText } from './ballast-text.js';
+import { chance, loadInWords, namesOf } from './brief.js';
+import { ballastText, imbalanceWithout } from './ballast-text.js';
 import { estimateCells, estimateInWords } from './estimate-text.js';
 import { headingText } from './heading-text.js';
 import { bullets, prose, section, sentence, text } from './prose.js';
@@ -97,13 +97,7 @@ function groupText(build: ParallelBuild, style: Style): string {
 
 function withoutBallastText(build: ParallelBuild, style: Style): string {
   if (build.ballast.kind === 'none') return '';
-  const { withoutBallast, load } = build;
-  const imbalance = estimateInWords(withoutBallast.imbalance, 'ratio');
-  const at =
-    withoutBallast.load < load.current
-      ? `Just before they fail, at ${brief(withoutBallast.load, 'current')},`
-      : `At ${loadInWords(load)}`;
-  const lines = [`${at} the imbalance would be ${imbalance}`, ...withoutBallast.story];
+  const lines = [imbalanceWithout(build), ...build.withoutBallast.story];
   return section('Without ballast', bullets(lines), style);
 }
 

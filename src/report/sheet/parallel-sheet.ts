@@ -4,6 +4,7 @@ import { formatQuantity } from '../../quantity/format-quantity.js';
 import { listed } from '../../quantity/listed.js';
 import type { Dimension } from '../../quantity/quantity.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
+import { imbalanceWithout } from '../build/ballast-text.js';
 import { brief, chance, loadInWords, namesOf } from '../build/brief.js';
 import { estimateCells, estimateInWords } from '../build/estimate-text.js';
 import { sentence } from '../build/prose.js';
@@ -140,13 +141,14 @@ function cellsOf(estimate: Estimate | undefined, dimension: Dimension): readonly
   return estimate === undefined ? ['', ''] : estimateCells(estimate, dimension);
 }
 
-function withoutBallast({ ballast, withoutBallast: without, load }: ParallelBuild): Markup | undefined {
+function withoutBallast(build: ParallelBuild): Markup | undefined {
+  const { ballast, withoutBallast: without } = build;
   if (ballast.kind === 'none') return undefined;
   const hog = without.hog === undefined ? '' : `; ${without.hog} carries most`;
   return section(
     'Without ballast',
     bullets([
-      `${without.load < load.current ? 'Just before they fail, at' : 'At'} ${brief(Math.min(without.load, load.current), 'current')} the imbalance would be ${estimateInWords(without.imbalance, 'ratio')}${hog}.`,
+      `${imbalanceWithout(build)}${hog}.`,
       `The group would fail as a whole at ${brief(without.failsAt, 'current')}.`,
       ...without.story.map(sentence),
     ]),
