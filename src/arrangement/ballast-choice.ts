@@ -1,6 +1,6 @@
 import { whyNoBallast } from '../analysis/group-ballast.js';
 import { percent } from '../analysis/in-words.js';
-import { smallestBallast } from '../circuit/ballast.js';
+import { type BallastWanted, smallestBallast } from '../circuit/ballast.js';
 import { resistorRating } from '../circuit/resistor-rating.js';
 import { type GroupModule, worstDissipation } from '../circuit/worst-sharing.js';
 import type { Amperes, Ohms, Ratio } from '../quantity/quantity.js';
@@ -28,7 +28,8 @@ export function recommendedWith(
 
 /**
  * The ballast that was given, or the smallest of E12 (IEC 60063) that keeps the worst case within the imbalance
- * asked for at the load; where no load is asked for, at what the group is recommended for with that very ballast.
+ * asked for at the load, and with which the group is recommended for that load, if there is any; where no load is
+ * asked for, at what the group is recommended for with that very ballast.
  */
 export function ballastFor(
   profiles: readonly ModuleProfile[],
@@ -37,13 +38,21 @@ export function ballastFor(
 ): BallastTaken {
   if (ballast.kind === 'given') return { kind: 'resistor', resistance: ballast.resistance };
   if (profiles.some(({ recommended }) => recommended.current <= 0)) return { kind: 'none' };
-  const outcome = smallestBallast({
+  const limitWith = (resistance: Ohms): Amperes => recommendedWith(profiles, resistance, tolerance).limit;
+  const wanted: BallastWanted = {
     modules: profiles.map(asGroupModule),
-    load: load ?? ((resistance) => recommendedWith(profiles, resistance, tolerance).limit),
+    load: load ?? limitWith,
     imbalance: ballast.most,
     tolerance,
     series: 'E12',
-  });
+  };
+  // A larger one may let the group give more, though a smaller one shares evenly enough.
+  const carrying =
+    load === undefined
+      ? undefined
+      : smallestBallast({ ...wanted, isGood: (resistance) => limitWith(resistance) >= load });
+  const isCarried = carrying?.kind === 'found' || carrying?.kind === 'unneeded';
+  const outcome = isCarried ? carrying : smallestBallast(wanted);
   switch (outcome.kind) {
     case 'found':
       return { kind: 'resistor', resistance: outcome.value };

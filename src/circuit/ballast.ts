@@ -18,6 +18,8 @@ export interface BallastWanted {
   readonly series: PreferredSeries;
   /** The most that the ballasts may cost of the lowest open-circuit voltage; 10 % when left out. */
   readonly mostCost?: number;
+  /** Whether a ballast in Ω, 0 for none, is good for all else that is asked of it; any is when left out. */
+  readonly isGood?: (ballast: number) => boolean;
 }
 
 /** A ballast that does it. */
@@ -60,12 +62,13 @@ export const usualCost = 0.1;
  */
 export function smallestBallast(wanted: BallastWanted): BallastOutcome {
   requireSense(wanted);
-  const { modules, tolerance, series, mostCost = usualCost } = wanted;
+  const { modules, tolerance, series, mostCost = usualCost, isGood = () => true } = wanted;
   const loadOf = (ballast: number): number =>
     typeof wanted.load === 'function' ? wanted.load(ballast) : wanted.load;
   const worst = (ballast: number) => worstSharing({ modules, load: loadOf(ballast), tolerance, ballast });
   const direct = worst(0);
-  if (direct.imbalance <= wanted.imbalance) return { kind: 'unneeded', imbalance: direct.imbalance };
+  if (direct.imbalance <= wanted.imbalance && isGood(0))
+    return { kind: 'unneeded', imbalance: direct.imbalance };
   const lowest = Math.min(...modules.map(({ openCircuit }) => openCircuit.value));
   let largest = 0;
   let left = direct.imbalance;
@@ -74,7 +77,7 @@ export function smallestBallast(wanted: BallastWanted): BallastOutcome {
     const voltageCost = (value * load) / modules.length;
     if (voltageCost > mostCost * lowest) break;
     const { imbalance, mostCurrent } = worst(value);
-    if (imbalance <= wanted.imbalance) {
+    if (imbalance <= wanted.imbalance && isGood(value)) {
       const dissipation = worstDissipation({ modules, load, tolerance, ballast: value });
       return { kind: 'found', value, imbalance, mostCurrent, dissipation, voltageCost };
     }
