@@ -1,4 +1,4 @@
-import { amps, givenPercent, volts } from '../analysis/in-words.js';
+import { givenPercent, ratedAmperes, volts } from '../analysis/in-words.js';
 import { listed } from '../quantity/listed.js';
 import { formatExact, formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Ratio } from '../quantity/quantity.js';
@@ -98,6 +98,6 @@ function tooMuch(
   if (load === undefined || load <= recommended || recommended <= 0) return [];
   const modules = Math.ceil((load * profiles.length) / recommended);
   return [
-    `${amps(load)} is asked for, and ${roundedDown(recommended, 'current')} is the most that the group is recommended for. Ask for less, or put more modules side by side: of modules like these about ${modules} would do, if they share as well.`,
+    `${ratedAmperes(load)} is asked for, and ${roundedDown(recommended, 'current')} is the most that the group is recommended for. Ask for less, or put more modules side by side: of modules like these about ${modules} would do, if they share as well.`,
   ];
 }

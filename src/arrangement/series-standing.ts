@@ -1,4 +1,4 @@
-import { amps } from '../analysis/in-words.js';
+import { ratedAmperes } from '../analysis/in-words.js';
 import { touchable } from '../circuit/touchable.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes } from '../quantity/quantity.js';
@@ -79,7 +79,7 @@ function tooMuch({
 }): readonly string[] {
   return load > recommended && recommended > 0
     ? [
-        `${amps(load)} is asked for, and ${roundedDown(recommended, 'current')} is the most that the string is recommended for. Ask for less, or put a stronger module for the weakest.`,
+        `${ratedAmperes(load)} is asked for, and ${roundedDown(recommended, 'current')} is the most that the string is recommended for. Ask for less, or put a stronger module for the weakest.`,
       ]
     : [];
 }
