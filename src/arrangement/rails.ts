@@ -44,7 +44,15 @@ export function highestOf(rails: readonly Rail[]): Volts {
   return Math.max(0, ...rails.map(({ top }) => top.high));
 }
 
-/** How a sentence writes what a rail stands at: fine enough to show on which side of a limit it is. */
+/** How a sentence writes what a rail stands at. */
 export function railVolts(voltage: Volts): string {
   return formatQuantity(voltage, 'voltage', { significant: 4 });
+}
+
+/** The same of the highest that it may be, never rounded down: what is beyond a limit is written beyond it. */
+export function railVoltsAtMost(voltage: Volts): string {
+  if (voltage === 0) return railVolts(voltage);
+  const step = 10 ** (Math.floor(Math.log10(voltage)) - 3);
+  // A whole number of steps is not made one more by what dividing loses.
+  return railVolts(Math.ceil(voltage / step - 1e-9) * step);
 }

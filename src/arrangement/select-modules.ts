@@ -1,3 +1,4 @@
+import { touchable } from '../circuit/touchable.js';
 import { formatExact } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import { UnfitWishError, type UnfitModule } from './arrangement-error.js';
@@ -179,7 +180,7 @@ function whatIsMissing(
     }
     return group > 1 && ballast.kind === 'for-imbalance'
       ? `Of the ${there} modules ${of} no choice shares as evenly as is wished, or bears its place in the stack: allow a larger imbalance, or take closer resistors.`
-      : `Of the ${there} modules ${of} no choice bears its place in the stack: what their outputs withstand to earth is too little.`;
+      : `Of the ${there} modules ${of} no choice bears its place in the stack: what their outputs withstand to earth is too little, or not known, and then no more than ${touchable} V is relied on.`;
   });
 }
 

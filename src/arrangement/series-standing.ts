@@ -5,7 +5,7 @@ import type { Amperes } from '../quantity/quantity.js';
 import { roundedDown } from '../quantity/rounded-down.js';
 import type { Concern, Standing } from './build.js';
 import type { ModuleProfile } from './module-profile.js';
-import { railVolts } from './rails.js';
+import { railVolts, railVoltsAtMost } from './rails.js';
 import type { Rail } from './series-build.js';
 import { standingOf } from './standing-of.js';
 
@@ -53,7 +53,7 @@ function refusalsOf({ profile, place, rail }: Placed): readonly string[] {
   }
   if (rail.verdict === 'beyond' && rail.isolation !== 'unknown') {
     refusals.push(
-      `${name} would stand at up to ${railVolts(rail.top.high)} above earth, and its output withstands ${formatQuantity(rail.isolation, 'voltage')}. Put it lower in the string, or leave it out.`,
+      `${name} would stand at up to ${railVoltsAtMost(rail.top.high)} above earth, and its output withstands ${formatQuantity(rail.isolation, 'voltage')}. Put it lower in the string, or leave it out.`,
     );
   }
   if (profile.recommended.current <= 0) {
@@ -116,6 +116,6 @@ export function isolationUnknown(module: string, top: Rail['top']): Concern {
     module,
     run: undefined,
     weight: isBeyond ? 'hinders' : 'weakens',
-    text: `it would stand at up to ${railVolts(top.high)} above earth${beyond}, and nobody knows what its output withstands: find out, and write it into its module file as output-isolation`,
+    text: `it would stand at up to ${railVoltsAtMost(top.high)} above earth${beyond}, and nobody knows what its output withstands: find out, and write it into its module file as output-isolation`,
   };
 }

@@ -5,6 +5,7 @@ import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import { hasStack, type LaidOut } from './laid-out.js';
 import { canBeLookedAt, movementBetween } from './movements.js';
+import { railVoltsAtMost } from './rails.js';
 import { dissipationOf } from './stages-sense.js';
 import type { StagesFound } from './stages-standing.js';
 import type { SwitchOver } from './staged-build.js';
@@ -53,7 +54,7 @@ function touchCaution(laid: readonly LaidOut[]): readonly string[] {
   const highest = highestOf(laid);
   return highest > touchable
     ? [
-        `It reaches ${formatQuantity(highest, 'voltage', { significant: 4 })} before the linear stage, beyond the ${touchable} V DC that are safe to touch (ES1, IEC 62368-1): cover all of it, so that nothing can be reached without a tool.`,
+        `It reaches ${railVoltsAtMost(highest)} before the linear stage, beyond the ${touchable} V DC that are safe to touch (ES1, IEC 62368-1): cover all of it, so that nothing can be reached without a tool.`,
       ]
     : [];
 }

@@ -190,6 +190,13 @@ describe('a string of which it cannot be told', () => {
     expect(because(stack(unknown, unknown, unknown, unknown))).toMatch(
       /^cannot-tell: K4: it would stand at up to 60\.\d\d V above earth, beyond the 60 V DC/,
     );
+    // Each known to 3 mV, so 6 mV together.
+    const four = (openCircuit: number): string =>
+      because(stack(...Array.from({ length: 4 }, () => ({ ...unknown, openCircuit }))));
+    expect(four(14.998)).toMatch(
+      /^cannot-tell: K4: it would stand at up to 60\.01 V above earth, beyond the 60 V DC/,
+    );
+    expect(four(14.99)).toBe('');
     const low = buildSeries(stack(unknown, unknown, unknown), asRecommended);
     expect(low.standing.kind).toBe('may-be-built');
     expect(low.rails.map(({ verdict }) => verdict)).toEqual(['not-needed', 'unknown', 'unknown']);

@@ -1,5 +1,5 @@
+import { railVoltsAtMost } from '../../arrangement/rails.js';
 import type { Rail, ReverseDiode, SeriesBuild } from '../../arrangement/series-build.js';
-import { formatQuantity } from '../../quantity/format-quantity.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { alignTable } from '../align.js';
 import { printableData } from '../printable.js';
@@ -55,7 +55,7 @@ function weakest({ weakest: { module, sure, then } }: SeriesBuild): string {
 }
 
 function touch({ beyondTouchable, openVoltage }: SeriesBuild): string {
-  const most = `with no load it can be ${formatQuantity(openVoltage.high, 'voltage', { significant: 3 })} from end to end`;
+  const most = `with no load it can be ${railVoltsAtMost(openVoltage.high)} from end to end`;
   return beyondTouchable
     ? `NOT SAFE TO TOUCH: ${most}, and above 60 V DC (ES1 of IEC 62368-1) nobody may be able to`
     : `${most}, which is below 60 V DC (ES1 of IEC 62368-1)`;
