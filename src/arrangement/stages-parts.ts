@@ -30,14 +30,25 @@ export function stagesParts(
     voltage: highestOf(laid),
     current: Math.max(...laid.map(({ fullCurrent }) => fullCurrent)),
   };
-  return [
+  const drawn = [
     ...moduleParts(profiles),
     ...ballastPart(profiles, most.current, wish),
     ...reverseDiodes(profiles, laid),
-    ...contactParts(wish.contacts, most),
-    ...steeringDiodes(wish, most),
+  ];
+  return [
+    ...drawn,
+    ...apartFrom(drawn, [...contactParts(wish.contacts, most), ...steeringDiodes(wish, most)]),
     heatSink(wish.linearStage, mostDissipation),
   ];
+}
+
+/** What a file names as something is numbered that is drawn is told from it. */
+function apartFrom(drawn: readonly Part[], named: readonly Part[]): readonly Part[] {
+  const taken = new Set(drawn.flatMap(({ marks }) => marks));
+  return named.map((part) => ({
+    ...part,
+    marks: part.marks.map((mark) => (taken.has(mark) ? `${mark} of the switching` : mark)),
+  }));
 }
 
 function ballastPart(
@@ -147,11 +158,14 @@ function heatSink({ dissipation }: LinearStage, most: Watts): Part {
     ...shared,
     ratings:
       rise > 0
-        ? [
-            keeps,
-            `at most ${Number((rise / most).toPrecision(2))} K/W from case to air of ${degrees(cabinetAir)}`,
-          ]
+        ? [keeps, `at most ${threeDigitsDown(rise / most)} K/W from case to air of ${degrees(cabinetAir)}`]
         : [keeps],
     why: `with ${watts} of heat; what lies between case and heat sink is part of it`,
   };
+}
+
+/** Never up: what is allowed at most must not grow by being written. */
+function threeDigitsDown(value: number): number {
+  const step = 10 ** (Math.floor(Math.log10(value)) - 2);
+  return Number((Math.floor(value / step + 1e-9) * step).toPrecision(3));
 }

@@ -198,7 +198,7 @@ describe('what is guaranteed', () => {
     expect(by(87.5).mostDissipation).toBe(30);
     expect(by(87.5).parts.at(-1)?.ratings).toEqual([
       'keeps the case at 87.5 °C at most',
-      'at most 1.6 K/W from case to air of 40 °C',
+      'at most 1.58 K/W from case to air of 40 °C',
     ]);
   });
 
