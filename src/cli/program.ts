@@ -47,11 +47,14 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     program.command(usage).description(description).addHelpText('after', `\nExample:\n  ${example}\n`);
   const json = (): Option => new Option('--json', 'print one JSON object instead of text');
   const ballast = (): Option =>
-    new Option('--ballast <resistance>', 'in series with each module, "51 mΩ" (or "51 mohm")');
+    new Option(
+      '--ballast <resistance>',
+      'in series with each module, "51 mΩ" (or "51 mohm"); chosen when left out',
+    );
   const imbalance = (): Option =>
     new Option(
       '--imbalance <share>',
-      'have the ballast chosen: the most that shares may differ; "10 %" when left out',
+      'the most that shares may differ, by which a ballast is chosen; "10 %" when left out',
     );
   const tolerance = (): Option =>
     new Option('--resistor-tolerance <share>', 'of the ballasts; "1 %" when left out');
@@ -117,9 +120,9 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     'what modules come to side by side or one upon the other, from their records, and whether that may be built',
     'railproof combine --parallel fixtures/runs/20261130T091500Z-K1-real-limit fixtures/runs/20261202T034336Z-K2-real-limit',
   )
-    .option('--parallel', 'side by side, a ballast in series with each')
-    .option('--series', 'one upon the other, the lowest first')
-    .option('--load <current>', 'what they are to feed, "6 A"; what is recommended, when left out')
+    .option('--parallel', 'side by side, a ballast in series with each; this or --series')
+    .option('--series', 'one upon the other, the lowest first; this or --parallel')
+    .option('--load <current>', 'what they are to feed, "6 A"; what is recommended when left out')
     .addOption(ballast())
     .addOption(imbalance())
     .addOption(tolerance())
@@ -147,8 +150,8 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     'which modules of a drawer of records go together best, and by how much',
     'railproof select fixtures/runs --group 2 --supplies 2',
   )
-    .option('--group <number>', 'modules side by side in each place')
-    .option('--stack <number>', 'places one upon the other')
+    .option('--group <number>', 'modules side by side in each place; 1 when left out')
+    .option('--stack <number>', 'places one upon the other; 1 when left out')
     .option('--supplies <number>', 'alike supplies out of the one drawer; 1 when left out')
     .addOption(ballast())
     .addOption(imbalance())

@@ -51,6 +51,16 @@ describe('help', () => {
     },
   );
 
+  it.each([
+    ['select', ['--group', '--stack', '--supplies', '--ballast', '--imbalance', '--resistor-tolerance']],
+    ['combine', ['--load', '--ballast', '--imbalance', '--resistor-tolerance']],
+  ])('of %s says what holds where an option is left out', async (command, options) => {
+    const { stdout } = await railproof([command, '--help']);
+    const said = stdout.replace(/\s+/g, ' ');
+    for (const option of options)
+      expect(said).toMatch(new RegExp(`${option} <\\w+>(?:(?! --).)* when left out`));
+  });
+
   it('of run shows an example that works', async () => {
     const { status, stdout } = await railproof([...(await exampleOf('run')), '--runs', folder]);
     expect(stdout).toContain('recommended-current');
