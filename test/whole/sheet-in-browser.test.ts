@@ -126,6 +126,24 @@ describe.skipIf(isMissing)('a build sheet in a browser (needs /usr/bin/chromium)
     await page.close();
   });
 
+  // With tables as large as on the screen each took seven pages or eight; another font may ask for one more than this one.
+  it.each([
+    ['parallel', madeParallel(), 6],
+    ['series', madeSeries(), 5],
+    ['stages', madeStages(), 7],
+    ['selection', madeSelection(), 6],
+  ])('of %s prints on few pages, its tables no larger than its text', async (name, build, most) => {
+    const { page } = await opened(`pages-${name}`, buildPage(build, made));
+    const pdf = (await page.pdf({ preferCSSPageSize: true })).toString('latin1');
+    expect(pdf.match(/\/MediaBox/g)?.length ?? Infinity).toBeLessThanOrEqual(most);
+    await page.emulateMedia({ media: 'print' });
+    const [table = NaN, text = NaN] = await page.evaluate<number[]>(
+      "['td', 'li'].map((each) => parseFloat(getComputedStyle(document.querySelector(each)).fontSize))",
+    );
+    expect(table).toBeLessThanOrEqual(text);
+    await page.close();
+  });
+
   it('prints dark on white though the screen is dark', async () => {
     const { page } = await opened('dark', buildPage(madeSeries(), made));
     await page.emulateMedia({ colorScheme: 'dark' });

@@ -64,7 +64,8 @@ function assignmentText(
   { supplies, recommended, imbalance, ballast }: Assignment,
   style: Style,
 ): string {
-  const head = ['', 'continuously', 'worst imbalance'];
+  const shares = supplies.some(({ groups }) => groups.some(({ modules }) => modules.length > 1));
+  const head = ['', 'continuously', shares ? 'worst imbalance' : ''];
   const rows = supplies.map((supply) => [
     inSigns(supply),
     roundedDown(supply.recommended, 'current'),

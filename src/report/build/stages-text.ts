@@ -1,4 +1,4 @@
-import type { Guaranteed, Movement, MovementVerdict, StagedBuild } from '../../arrangement/staged-build.js';
+import type { Movement, MovementVerdict, StagedBuild } from '../../arrangement/staged-build.js';
 import { type Sequence, sequences } from '../../arrangement/stages-wish.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { alignTable } from '../align.js';
@@ -12,6 +12,7 @@ import { headingText } from './heading-text.js';
 import { cautionsText, partsText } from './parts-text.js';
 import { prose, section, stopped, text } from './prose.js';
 import { concernsText, sourcesText } from './records-text.js';
+import { setBy } from './set-by.js';
 import { spanOf, stretchesOf } from './stretches.js';
 import { standingText } from './standing-text.js';
 
@@ -50,21 +51,13 @@ function answer(build: StagedBuild, style: Style): string {
   return standingText(build, { what, tooLittle: what }, style);
 }
 
-const limits: Readonly<Record<Guaranteed['setBy'], string>> = {
-  module: 'the modules',
-  ballast: 'the ballast',
-  dissipation: "the linear stage's heat",
-  'drop-out': "the linear stage's drop-out",
-  'linear-stage': "the linear stage's own limit",
-};
-
 function guaranteedText(build: StagedBuild, style: Style): string {
   const stretches = stretchesOf(build.guaranteed, ({ rising }) => rising);
   const rows = stretches.map(({ from, to, least, most, of }) => [
     from === to ? briefDigits(from) : `${briefDigits(from)} to ${briefDigits(to)}`,
     spanOf({ least, most }),
     of.arrangement,
-    limits[of.setBy],
+    setBy[of.setBy],
   ]);
   const head = ['output, V', 'at least', 'from', 'set by'];
   return section(
@@ -86,9 +79,9 @@ function arrangementsText({ arrangements }: StagedBuild, style: Style): string {
     estimateCells(fullVoltage, 'voltage')[0],
     roundedDown(current, 'current'),
   ]);
-  const more = arrangements.flatMap(({ name, closed, setBy }) => [
+  const more = arrangements.flatMap(({ name, closed, setBy: by }) => [
     prose(closed.length === 0 ? 'no contact closed.' : `closed are ${closed.join(', ')}.`, `${name}: `),
-    prose(stopped(`no more because of ${setBy}`), `${name}: `),
+    prose(stopped(`no more because of ${by}`), `${name}: `),
   ]);
   return section(
     'Arrangements',

@@ -37,11 +37,3 @@ export function spanOf({ least, most }: Pick<Stretch, 'least' | 'most'>): string
   const [low, high] = [roundedDown(least, 'current'), roundedDown(most, 'current')];
   return low === high ? low : `${low} to ${high}`;
 }
-
-export const limits: Readonly<Record<Guaranteed['setBy'], string>> = {
-  module: 'the modules',
-  ballast: 'the ballast',
-  dissipation: 'the heat of the linear stage',
-  'drop-out': 'the drop-out of the linear stage',
-  'linear-stage': "the linear stage's own current limit",
-};

@@ -149,16 +149,23 @@ h1{font-size:1.6rem}
 @page{size:A4;margin:16mm 15mm 18mm}
 @media print{
 :root{color-scheme:light;${variables(light)};--paper:#fff}
-body{font-size:10pt;line-height:1.4}
+html{font-size:9.5pt}
+body{line-height:1.4}
+p,ul,ol,figcaption{max-width:none}
 header,main,footer{max-width:none;padding-inline:0}
 header{padding-top:0}
-section{margin-top:1.6rem}
+section{margin-top:1.5rem}
+.standing{margin-top:1rem;padding:.8rem 1rem}
+figure,.wide{margin-block:.7rem}
+th,td{padding-block:.22rem}
+footer{margin-top:1.5rem;padding-bottom:0;break-before:avoid}
 tr,li,figure,.standing{break-inside:avoid}
 thead{display:table-header-group;break-after:avoid}
 caption{break-after:avoid}
-h1{font-size:20pt}h2{font-size:14pt}h3{font-size:11pt}
+h1{font-size:20pt}h2{font-size:13pt}h3{font-size:11pt}
 .wide{overflow:visible}
-.chart{width:100%;max-width:16cm;min-width:0}
+.chart{width:100%;max-width:13.5cm;min-width:0}
+.diagram{max-height:10.5cm;width:auto}
 .skip{display:none}
 p,li{orphans:3;widows:3}
 }

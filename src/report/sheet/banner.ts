@@ -1,3 +1,4 @@
+import { alikeConcerns } from '../build/alike-concerns.js';
 import { type AnyBuild, type BuildOutcome, outcomeOf } from '../build/any-build.js';
 import { sentence } from '../build/prose.js';
 import { element, type Markup } from '../page/markup.js';
@@ -48,13 +49,16 @@ export function banner(build: AnyBuild, said: readonly string[]): Markup {
   );
 }
 
-function seeConcerns({ concerns }: AnyBuild): Markup | undefined {
-  if (concerns.length === 0) return undefined;
-  const what = concerns.length === 1 ? 'One thing is' : `${concerns.length} things are`;
+/** Where it may be built they come before that; where not they are what else there is to say. */
+function seeConcerns(build: AnyBuild): Markup | undefined {
+  const { length } = alikeConcerns(build.concerns);
+  if (length === 0) return undefined;
+  const what = length === 1 ? 'One thing is' : `${length} things are`;
+  const when = build.standing.kind === 'may-be-built' ? 'before it is built' : 'besides';
   return element(
     'p',
     {},
-    `${what} to be known about the records first: `,
+    `${what} to be known ${when}: `,
     element('a', { href: '#about-the-records' }, 'about the records'),
     '.',
   );

@@ -1,10 +1,11 @@
 import type { Concern } from '../../arrangement/build.js';
-import type { ModuleProfile, Taken } from '../../arrangement/module-profile.js';
+import type { ModuleProfile } from '../../arrangement/module-profile.js';
 import type { RecordSource } from '../../arrangement/understood-record.js';
-import type { Dimension } from '../../quantity/quantity.js';
-import { roundedDown } from '../../quantity/rounded-down.js';
+import { listed } from '../../quantity/listed.js';
+import { type AlikeConcerns, alikeConcerns } from '../build/alike-concerns.js';
 import { brief } from '../build/brief.js';
-import { estimateCells } from '../build/estimate-text.js';
+import { stopped } from '../build/prose.js';
+import { takenRows } from '../build/taken-rows.js';
 import { inMinutes } from '../in-minutes.js';
 import { type Content, element, type Markup } from '../page/markup.js';
 import { bullets, section } from '../page/page.js';
@@ -13,10 +14,9 @@ import { table } from '../page/table.js';
 /** What must be known of the records before anything is built on them; what nothing can be decided on first. */
 export function concernsSection(concerns: readonly Concern[]): Markup | undefined {
   if (concerns.length === 0) return undefined;
-  const of = (weight: Concern['weight']): readonly Content[] =>
-    concerns.filter((concern) => concern.weight === weight).map(inWords);
-  const hinders = of('hinders');
-  const weakens = of('weakens');
+  const groups = alikeConcerns(concerns);
+  const hinders = groups.filter(({ weight }) => weight === 'hinders').map(inWords);
+  const weakens = groups.filter(({ weight }) => weight === 'weakens').map(inWords);
   return section(
     'About the records',
     hinders.length > 0 && element('h3', {}, 'Nothing can be decided on these'),
@@ -26,11 +26,15 @@ export function concernsSection(concerns: readonly Concern[]): Markup | undefine
   );
 }
 
-function inWords({ module, run, text }: Concern): Content {
+function inWords({ modules, runs, text }: AlikeConcerns): Content {
   return [
-    element('strong', {}, module),
-    `: ${text}${/[.!?]$/.test(text) ? '' : '.'}`,
-    run !== undefined && [' ', element('span', { class: 'soft' }, `Record ${run}.`)],
+    modules.length > 1 && 'Each of ',
+    element('strong', {}, listed(modules)),
+    `: ${stopped(text)}`,
+    runs.length > 0 && [
+      ' ',
+      element('span', { class: 'soft' }, `Record${runs.length === 1 ? '' : 's'} ${listed(runs)}.`),
+    ],
   ];
 }
 
@@ -67,7 +71,7 @@ export function plateOf({ label }: ModuleProfile): string {
 /** Every number that was taken over, and the record that it was taken from. */
 export function sourcesSection(modules: readonly ModuleProfile[]): Markup | undefined {
   if (modules.length === 0) return undefined;
-  const rows = modules.flatMap((module) => rowsOf(module).map((row) => ({ module, ...row })));
+  const rows = modules.flatMap((module) => takenRows(module).map((row) => ({ module, ...row })));
   const sources = [...new Map(rows.map(({ from }) => [from.run, from])).values()];
   const numberOf = (from: RecordSource): number => sources.findIndex(({ run }) => run === from.run) + 1;
   return section(
@@ -80,8 +84,16 @@ export function sourcesSection(modules: readonly ModuleProfile[]): Markup | unde
         { heading: 'Value', as: 'number' },
         { heading: '95 %', as: 'fixed' },
         { heading: 'Record', as: 'number' },
+        { heading: 'Note', as: 'text' },
       ],
-      rows.map(({ module, what, cells, from }) => [module.name, what, ...cells, numberOf(from)]),
+      rows.map(({ module, what, value, limits, note, from }) => [
+        module.name,
+        what,
+        value,
+        limits,
+        numberOf(from),
+        note,
+      ]),
     ),
     table(
       'The records.',
@@ -108,40 +120,3 @@ const states: Readonly<Record<RecordSource['state'], string>> = {
   stopped: 'stopped early',
   'cut-off': 'cut off',
 };
-
-interface Row {
-  readonly what: string;
-  readonly cells: readonly [value: string, limits: string];
-  readonly from: RecordSource;
-}
-
-function rowsOf(module: ModuleProfile): readonly Row[] {
-  const { recommended, limitStyle, earth } = module;
-  return [
-    ...number('voltage at no load', module.openCircuit, 'voltage'),
-    ...number('droop', module.droop, 'resistance'),
-    ...number('usable', module.usable, 'current'),
-    {
-      what: 'recommended',
-      cells: [roundedDown(recommended.current, 'current'), ''],
-      from: recommended.from,
-    },
-    ...number('drops out at', module.dropout, 'current'),
-    ...number('into a short', module.shortCircuit, 'current'),
-    ...word('past its limit', limitStyle?.word, limitStyle?.from),
-    ...word('output to earth', earth?.relation, earth?.from),
-  ];
-}
-
-function number(what: string, taken: Taken | undefined, dimension: Dimension): readonly Row[] {
-  if (taken === undefined) return [];
-  const [low, high] = taken.interval;
-  const bound = taken.bound === undefined ? {} : { bound: taken.bound };
-  return [
-    { what, cells: estimateCells({ value: taken.value, low, high, ...bound }, dimension), from: taken.from },
-  ];
-}
-
-function word(what: string, said: string | undefined, from: RecordSource | undefined): readonly Row[] {
-  return said === undefined || from === undefined ? [] : [{ what, cells: [said, ''], from }];
-}

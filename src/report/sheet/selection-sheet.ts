@@ -95,18 +95,19 @@ function assignment(
       group.modules.length > 1 ? percent(group.imbalance) : '',
     ]),
   );
+  const shares = supplies.some(({ groups }) => groups.some(({ modules }) => modules.length > 1));
   return table(
     `${caption}${through}`,
     [
       { heading: 'Place, the lowest first', as: 'name' },
       { heading: 'Modules' },
       { heading: 'Continuously', as: 'number' },
-      { heading: 'Imbalance', as: 'number' },
+      ...(shares ? [{ heading: 'Imbalance', as: 'number' } as const] : []),
     ],
     [
       ...rows,
       ['weakest of all', '', roundedDown(recommended, 'current'), imbalance > 0 ? percent(imbalance) : ''],
-    ],
+    ].map((row) => (shares ? row : row.slice(0, -1))),
   );
 }
 

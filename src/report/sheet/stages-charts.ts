@@ -1,6 +1,7 @@
 import type { Guaranteed, StagedBuild } from '../../arrangement/staged-build.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { brief } from '../build/brief.js';
+import { setBy, setByInShort } from '../build/set-by.js';
 import { heatMap } from '../chart/heat-map.js';
 import { type ChartLine, lineChart } from '../chart/line-chart.js';
 import type { VerticalMark } from '../chart/marks.js';
@@ -24,7 +25,7 @@ export function guaranteedChart(build: StagedBuild): Markup {
       description: stretches
         .map(
           ({ from, to, least, of }) =>
-            `${brief(from, 'voltage')} to ${brief(to, 'voltage')}: at least ${roundedDown(least, 'current')} by ${of.arrangement}, set by ${words[of.setBy].word}`,
+            `${brief(from, 'voltage')} to ${brief(to, 'voltage')}: at least ${roundedDown(least, 'current')} by ${of.arrangement}, set by ${setBy[of.setBy]}`,
         )
         .join('; ')
         .concat('.'),
@@ -37,7 +38,7 @@ export function guaranteedChart(build: StagedBuild): Markup {
       marks: switchMarks(build),
       ribbons: [arrangementRibbon(build), setByRibbon(build)],
     }),
-    `The strips are for a rising output. ${signsInWords(build)}`,
+    'The strips are for a rising output.',
   );
 }
 
@@ -54,24 +55,8 @@ function lineOf(
   };
 }
 
-const words: Readonly<Record<Guaranteed['setBy'], { readonly word: string; readonly sign: string }>> = {
-  module: { word: 'modules', sign: 'M' },
-  ballast: { word: 'ballast', sign: 'B' },
-  dissipation: { word: 'heat', sign: 'H' },
-  'drop-out': { word: 'drop-out', sign: 'D' },
-  'linear-stage': { word: 'linear stage', sign: 'L' },
-};
-
-function signsInWords({ guaranteed }: StagedBuild): string {
-  const used = [...new Set(guaranteed.map(({ rising }) => rising.setBy))];
-  return used
-    .map((each) => `${words[each].sign}: ${words[each].word}`)
-    .join(', ')
-    .concat('.');
-}
-
 function setByRibbon({ guaranteed }: StagedBuild): Ribbon {
-  return ribbonOf('Set by', guaranteed, (rising) => words[rising.setBy]);
+  return ribbonOf('Set by', guaranteed, (rising) => setByInShort[rising.setBy]);
 }
 
 function arrangementRibbon({ guaranteed, arrangements }: StagedBuild): Ribbon {

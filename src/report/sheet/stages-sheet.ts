@@ -13,7 +13,8 @@ import { contactsTable, movements } from './contacts.js';
 import { cautionsSection, isRefused, partsSection, provisional } from './parts.js';
 import { concernsSection, modulesSection, sourcesSection } from './records.js';
 import { dissipationMap, guaranteedChart } from './stages-charts.js';
-import { limits, spanOf, stretchesOf } from '../build/stretches.js';
+import { setBy } from '../build/set-by.js';
+import { spanOf, stretchesOf } from '../build/stretches.js';
 
 /** A supply whose input follows its output. */
 export function stagesSheet(build: StagedBuild): Sheet {
@@ -70,7 +71,7 @@ function guaranteed(build: StagedBuild): Markup {
         from === to ? brief(from, 'voltage') : `${brief(from, 'voltage')} to ${brief(to, 'voltage')}`,
         spanOf({ least, most }),
         of.arrangement,
-        limits[of.setBy],
+        setBy[of.setBy],
       ]),
     ),
   );
@@ -90,13 +91,13 @@ function arrangements(build: StagedBuild): Markup {
         { heading: 'At most', as: 'number' },
         { heading: 'Set by', as: 'long' },
       ],
-      each.map(({ name, circuit, openVoltage, fullVoltage, current, setBy }) => [
+      each.map(({ name, circuit, openVoltage, fullVoltage, current, setBy: by }) => [
         name,
         formInSigns(circuit.form),
         estimateCells(openVoltage, 'voltage')[0],
         estimateCells(fullVoltage, 'voltage')[0],
         roundedDown(current, 'current'),
-        sentence(setBy),
+        sentence(by),
       ]),
     ),
     !isRefused(build) && [

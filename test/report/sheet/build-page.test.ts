@@ -1,8 +1,11 @@
 import { describe, expect, it } from 'vitest';
 import type { Standing } from '../../../src/arrangement/build.js';
 import { buildSeries } from '../../../src/arrangement/build-series.js';
+import type { Selection } from '../../../src/arrangement/selection.js';
+import { buildAsText } from '../../../src/report/build/build-text.js';
 import { partMarks } from '../../../src/report/diagram/part-marks.js';
 import { buildPage } from '../../../src/report/page/build-page.js';
+import { plainStyle } from '../../../src/report/style.js';
 import { madeProfile } from '../../arrangement/made-profile.js';
 import { concern, madeParallel, madeSelection, madeSeries, madeStages } from './made-builds.js';
 
@@ -78,7 +81,7 @@ it('concerns stand with what nothing can be decided on first', () => {
   expect(page.indexOf('Nothing can be decided on these')).toBeLessThan(
     page.indexOf('To be known and weighed'),
   );
-  expect(page).toContain('2 things are to be known about the records first');
+  expect(page).toContain('2 things are to be known before it is built');
 });
 
 it('a part that is not drawn is said not to be', () => {
@@ -92,4 +95,37 @@ it('the marks of the drawn diodes are those of the parts list', () => {
   const drawn = [...partMarks(build.circuit).reverse.values()];
   expect(drawn).toHaveLength(2);
   expect(build.parts.flatMap(({ marks }) => marks)).toEqual(expect.arrayContaining(drawn));
+});
+
+it('what holds for several modules is said once, and counted once at the top', () => {
+  const each = ['K1', 'K2', 'K3'].map((module) => ({ ...concern, module }));
+  const page = buildPage(madeParallel({ standing: { kind: 'may-be-built' }, concerns: each }), made);
+  expect(page.split(concern.text)).toHaveLength(2);
+  expect(page).toContain('Each of <strong>K1, K2 and K3</strong>');
+  expect(page).toContain('One thing is to be known before it is built');
+});
+
+it('of what is refused nothing is said to come before it is built', () => {
+  const page = buildPage(madeParallel({ standing: refused, concerns: [concern] }), made);
+  expect(page).toContain('One thing is to be known besides');
+  expect(page).not.toContain('before it is built');
+});
+
+it('has a column of imbalances only where modules stand side by side', () => {
+  const paired = madeSelection();
+  const { best } = paired;
+  if (best === undefined) throw new Error('the made selection has a best');
+  const alone = {
+    ...best,
+    imbalance: 0,
+    supplies: best.supplies.map((supply) => ({
+      ...supply,
+      groups: supply.groups.map(({ modules, ...group }) => ({ ...group, modules: modules.slice(0, 1) })),
+    })),
+  };
+  const single: Selection = { ...paired, best: alone, next: undefined };
+  expect(buildPage(paired, made)).toContain('>Imbalance</th>');
+  expect(buildPage(single, made)).not.toMatch(/imbalance/i);
+  expect(buildAsText(paired, plainStyle)).toContain('worst imbalance');
+  expect(buildAsText(single, plainStyle)).not.toContain('imbalance');
 });
