@@ -12,7 +12,7 @@ import { ballastParts, parallelParts } from './parallel-parts.js';
 import { parallelStanding } from './parallel-standing.js';
 import type { PlacedGroup } from './places.js';
 import { railsOf, type Stacked } from './rails.js';
-import { groupDiodesOf } from './reverse-diodes.js';
+import { formDiodesOf } from './reverse-diodes.js';
 import type { Rail } from './series-build.js';
 import type { SelectionWish } from './selection.js';
 import { seriesCautions } from './series-cautions.js';
@@ -49,7 +49,7 @@ export function partsOf(supply: Supply, wished: Wished): readonly Part[] {
       : moduleParts(modules);
   }
   return [
-    ...seriesParts(modules, groupDiodesOf(supply.map((group) => group.modules))),
+    ...seriesParts(modules, formDiodesOf(circuitOf(supply, wished).form, modules)),
     ...ballastParts(modules, worstBallast(supply, wished)),
   ];
 }

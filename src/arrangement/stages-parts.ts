@@ -2,14 +2,15 @@ import { degrees, givenPercent, ratedAmperes, volts } from '../analysis/in-words
 import { resistorRating } from '../circuit/resistor-rating.js';
 import { formatExact, formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Volts, Watts } from '../quantity/quantity.js';
-import type { Form, Part } from './build.js';
+import type { Part } from './build.js';
 import { modulesOf } from './build.js';
 import { gradeFor } from './diode-grade.js';
 import { hasStack, type LaidOut } from './laid-out.js';
 import { moduleParts } from './module-parts.js';
 import type { ModuleProfile } from './module-profile.js';
 import { mostCurrentOf } from './most-current.js';
-import { groupDiodesOf } from './reverse-diodes.js';
+import { formDiodesOf } from './reverse-diodes.js';
+import type { ReverseDiode } from './series-build.js';
 import { seriesParts } from './series-parts.js';
 import { highestOf } from './stages-cautions.js';
 import type { Contact, LinearStage, StagesWish } from './stages-wish.js';
@@ -79,19 +80,42 @@ function ballastPart(
   ];
 }
 
-/** By the arrangement of the highest voltage that stacks anything. */
+/**
+ * Each module keeps its diode in every arrangement, so it is bought for the worst of them. One that is never in a
+ * stack has one as well, as heavy as the heaviest: the diagrams show it. In the order of the highest stack's diagram.
+ */
 function reverseDiodes(profiles: readonly ModuleProfile[], laid: readonly LaidOut[]): readonly Part[] {
   const stacked = laid.findLast(({ found }) => hasStack(found.circuit.form))?.found.circuit.form;
   if (stacked === undefined) return [];
-  const groups = stackedGroups(stacked).map((names) => profiles.filter(({ name }) => names.includes(name)));
-  return seriesParts([], groupDiodesOf(groups));
+  const found = laid.flatMap((each) => formDiodesOf(each.found.circuit.form, profiles));
+  const order = [...new Set([...modulesOf(stacked), ...profiles.map(({ name }) => name)])];
+  return seriesParts(
+    [],
+    order.flatMap((name) => {
+      const own = found.filter(({ module }) => module === name);
+      const heaviest = heaviestOf(own.length > 0 ? own : found);
+      return heaviest === undefined ? [] : [{ ...heaviest, module: name }];
+    }),
+  );
 }
 
-/** What stands one upon the other; of several stacks side by side, the one that holds most. */
-function stackedGroups(form: Form): readonly (readonly string[])[] {
-  if (form.kind === 'module') return [[form.name]];
-  if (form.kind === 'stack') return form.of.map(modulesOf);
-  return form.of.map(stackedGroups).reduce((most, each) => (each.length > most.length ? each : most), []);
+/** Of each rating the highest. */
+function heaviestOf(diodes: readonly ReverseDiode[]): ReverseDiode | undefined {
+  const [first, ...others] = diodes;
+  return others.reduce<ReverseDiode | undefined>((most, each) => {
+    if (most === undefined) return each;
+    const [lighter, heavier] = most.current < each.current ? [most, each] : [each, most];
+    const bound = lighter.bound ?? heavier.bound;
+    return {
+      ...heavier,
+      ...(bound === undefined ? {} : { bound }),
+      voltage: Math.max(most.voltage, each.voltage),
+      rating: {
+        current: Math.max(most.rating.current, each.rating.current),
+        voltage: Math.max(most.rating.voltage, each.rating.voltage),
+      },
+    };
+  }, first);
 }
 
 const kinds: Readonly<Record<Contact['kind'], string>> = {
