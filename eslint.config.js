@@ -66,6 +66,16 @@ export default tseslint.config(
       eqeqeq: 'error',
     },
   },
+  {
+    files: ['test/**/*.ts'],
+    ignores: ['test/property.ts'],
+    rules: {
+      'no-restricted-imports': [
+        'error',
+        { paths: [{ name: 'fast-check', message: 'test/property.ts chooses the cases, the same in every run.' }] },
+      ],
+    },
+  },
   { files: ['**/*.js'], ...tseslint.configs.disableTypeChecked },
   ...boundaries,
   prettier,

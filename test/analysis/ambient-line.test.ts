@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { allowedInAir } from '../../src/analysis/ambient-line.js';
+import fc from '../property.js';
 
 const line = { fullTo: 40, fallingTo: 0.5, at: 60 };
 

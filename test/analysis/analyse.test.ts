@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { analyse } from '../../src/analysis/analyse.js';
 import type { Finding } from '../../src/analysis/finding.js';
 import { findingNames } from '../../src/analysis/finding-names.js';
+import fc from '../property.js';
 import { evenly, evidenceOf, headerOf, type Point, ramp, type Sample, type Step } from './evidence-of.js';
 
 /** What any sound list of findings is, whatever the readings were. */

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { currentAtRise, riseAt } from '../../src/analysis/loss-model.js';
+import fc from '../property.js';
 
 const seen = { current: 4, rise: 40 };
 

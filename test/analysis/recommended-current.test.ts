@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { measured } from '../../src/analysis/finding.js';
 import { recommendedFindings } from '../../src/analysis/recommended-current.js';
 import type { Usable } from '../../src/analysis/usable-current.js';
+import fc from '../property.js';
 import { evidenceOf, headerOf } from './evidence-of.js';
 import { deratedBy, soakedOf } from './soaked.js';
 

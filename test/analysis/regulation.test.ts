@@ -1,10 +1,10 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import thermometer from '../../fixtures/reference/gum-h3.json' with { type: 'json' };
 import { analyse } from '../../src/analysis/analyse.js';
 import type { Finding } from '../../src/analysis/finding.js';
 import { randomFrom } from '../../src/statistics/random.js';
 import { coverageFactor } from '../../src/statistics/student-t.js';
+import fc from '../property.js';
 import { evenly, evidenceOf, headerOf, type Point, ramp } from './evidence-of.js';
 
 const rootThree = Math.sqrt(3);

@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { riseAt } from '../../src/analysis/loss-model.js';
 import { temperatureFactor } from '../../src/analysis/temperature-factor.js';
+import fc from '../property.js';
 import { deratedBy, soakedOf } from './soaked.js';
 
 const line = { expected: 45, fullTo: 50, fallingTo: 0.5, at: 70 };

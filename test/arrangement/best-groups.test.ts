@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
   bestPackings,
@@ -8,6 +7,7 @@ import {
   type Worth,
 } from '../../src/arrangement/best-groups.js';
 import { choicesOf } from '../../src/arrangement/group-candidates.js';
+import fc from '../property.js';
 
 /** Every way to take so many groups, each with the smallest ballast that does for all of them. */
 function everyWay(candidates: readonly Candidate[], count: number): readonly Packing[] {

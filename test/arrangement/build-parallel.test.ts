@@ -442,3 +442,43 @@ describe('a silly wish', () => {
     expect((error as UnfitWishError).advice).toMatch(/\.$/);
   });
 });
+
+describe('a module that does little for its group', patience, () => {
+  const small = madeProfile('K4', {
+    label: { voltage: 15, current: 1 },
+    openCircuit: 15.5,
+    usable: 1.3,
+    dropout: 1.4,
+    recommended: 1,
+  });
+  const large = madeProfile('K5', {
+    label: { voltage: 15, current: 8 },
+    usable: 9.5,
+    dropout: 10,
+    recommended: 8,
+  });
+
+  it('is told where the group is worse than its best module alone, and nothing is bought', () => {
+    const { standing, recommended, parts } = buildParallel([small, large], given(0.1));
+    expect(recommended.current).toBeLessThan(8);
+    expect(standing).toMatchObject({
+      kind: 'cannot-tell',
+      because: [expect.stringMatching(/^The group is recommended for .* A, less than K5 alone, 8\.00 A/)],
+    });
+    expect(parts).toEqual([]);
+  });
+
+  it('is a concern where the others give as much without it', () => {
+    const weak = madeProfile('K6', { openCircuit: 14.9, recommended: 4 });
+    const { concerns, recommended } = buildParallel([K1, K2, weak], given(0.01));
+    const without = buildParallel([K1, K2], given(0.01)).recommended.current;
+    expect(recommended.current - without).toBeLessThan(0.4);
+    expect(concerns).toMatchObject([{ kind: 'of-little-use', module: 'K6', weight: 'weakens' }]);
+  });
+
+  it('is none where all are alike', () => {
+    const { concerns, standing } = buildParallel([K1, K2, K3], within(0.1));
+    expect(concerns).toEqual([]);
+    expect(standing).toEqual({ kind: 'may-be-built' });
+  });
+});

@@ -1,9 +1,9 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { UnfitRecordsError, UnfitWishError } from '../../src/arrangement/arrangement-error.js';
 import { buildStages } from '../../src/arrangement/build-stages.js';
 import type { LinearStage, Sequence, StagesWish } from '../../src/arrangement/stages-wish.js';
 import { modulesOf } from '../../src/arrangement/build.js';
+import fc from '../property.js';
 import { alone, bricks, group, stack, valveBench, w1, w2, w3 } from './staged.js';
 import { breaks, changeOvers, changes, diode, makes, pairWires, singleContacts } from './switched.js';
 

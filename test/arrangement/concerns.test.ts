@@ -223,4 +223,55 @@ describe('what a builder must know of the records', () => {
       },
     ]);
   });
+
+  it('is that its clock was wrong when it was measured, from a day ahead on', () => {
+    const ahead = madeRecord({ findings: warmed });
+    expect(concerns([ahead], new Date('2026-11-29T12:00:00Z'))).toEqual([]);
+    expect(concerns([ahead], new Date('2026-11-28T09:00:00Z'))).toMatchObject([
+      {
+        kind: 'dated-ahead',
+        run: ahead.run,
+        weight: 'weakens',
+        text: 'its real-limit of 2026-11-30 lies in the future, so a clock was wrong and nobody knows how old it is: set the clocks, and run it again',
+      },
+    ]);
+  });
+
+  it('is that nobody can tell which of two records is the newer one where a clock was wrong', () => {
+    const [older, ahead] = ['2026-11-20', '2027-06-01'].map((on) => madeRecord({ on, findings: warmed }));
+    if (older === undefined || ahead === undefined) throw new Error('two were made');
+    expect(concerns([older, ahead])).toMatchObject([
+      { kind: 'dated-ahead', run: ahead.run, weight: 'hinders' },
+    ]);
+  });
+
+  it.each([
+    ['open-circuit-voltage', 'at most 15.75 V'],
+    ['temperature-rise', 'at most 30 K'],
+    ['answer-of-smell', 'is none'],
+  ])('refuses one whose %s is not what its procedure requires', (finding, requirement) => {
+    const findings = [...warmed, word('answer-of-smell', 'burnt')];
+    expect(concerns([madeRecord({ findings, unmet: [{ finding, requirement }] })])).toMatchObject([
+      { kind: 'not-accepted', weight: 'hinders' },
+    ]);
+  });
+
+  it('refuses an output that leaks to earth and was to be isolated, and leaves one that is bonded to what is built', () => {
+    const limit = madeRecord({ findings: warmed });
+    expect(concerns([limit, isolation('2026-11-30', 'leaky')])).toMatchObject([
+      { kind: 'not-accepted', weight: 'hinders' },
+    ]);
+    expect(concerns([limit, isolation('2026-11-30', 'bonded')])).toMatchObject([
+      { kind: 'not-accepted', weight: 'weakens' },
+    ]);
+  });
+
+  it('is never longer than a line or two, however much a module file says', () => {
+    const modules = [{ name: 'K1', description: 'x'.repeat(1_000_000) }];
+    const records = [madeRecord({ modules, findings: warmed })];
+    const [profile] = profilesOf(records, today).profiles;
+    expect(profile?.description).toMatch(/^x{100,300}… \(shortened\)$/);
+    const both = concerns([...records, madeRecord({ procedure: 'isolation', findings: [] })]);
+    expect(both.find(({ kind }) => kind === 'described-otherwise')?.text.length).toBeLessThan(700);
+  });
 });

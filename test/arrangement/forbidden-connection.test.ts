@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { forbiddenIn } from '../../src/arrangement/forbidden-connection.js';
 import type { Joint } from '../../src/arrangement/stages-wish.js';
 import { netlistOf, settledState, type Switching } from '../../src/arrangement/switching.js';
+import fc from '../property.js';
 import { largestCurrent } from './nodal-analysis.js';
 import { diode, makes, source, switched } from './switched.js';
 

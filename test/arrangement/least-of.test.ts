@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { leastOf, probabilityBelow } from '../../src/arrangement/least-of.js';
 import type { Taken } from '../../src/arrangement/module-profile.js';
 import { randomFrom } from '../../src/statistics/random.js';
+import fc from '../property.js';
 import { madeSource } from './made-profile.js';
 
 const from = madeSource('K1', 'usable');

@@ -1,9 +1,9 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { Form } from '../../src/arrangement/build.js';
 import { formInWords, isSameForm, madeForm, withoutDrops } from '../../src/arrangement/made-form.js';
 import type { Joint } from '../../src/arrangement/stages-wish.js';
 import { netlistOf, settledState, type Switching } from '../../src/arrangement/switching.js';
+import fc from '../property.js';
 import { changeOvers, diode, pairWires, source, switched } from './switched.js';
 
 const alone = (name: string): Form => ({ kind: 'module', name });

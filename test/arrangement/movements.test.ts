@@ -1,9 +1,9 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { forbiddenIn } from '../../src/arrangement/forbidden-connection.js';
 import { movementBetween } from '../../src/arrangement/movements.js';
 import type { Contact } from '../../src/arrangement/stages-wish.js';
 import { netlistOf, type Position, settledState, type Switching } from '../../src/arrangement/switching.js';
+import fc from '../property.js';
 import {
   breaks,
   changeOvers,

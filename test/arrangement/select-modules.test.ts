@@ -1,10 +1,10 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { buildParallel } from '../../src/arrangement/build-parallel.js';
 import { buildSeries } from '../../src/arrangement/build-series.js';
 import type { ModuleProfile } from '../../src/arrangement/module-profile.js';
 import { selectModules } from '../../src/arrangement/select-modules.js';
 import type { Assignment, Selection, SelectionWish } from '../../src/arrangement/selection.js';
+import fc from '../property.js';
 import { type MadeOf, madeProfile } from './made-profile.js';
 
 const wish: SelectionWish = {

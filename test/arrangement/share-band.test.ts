@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { drawnGroup, withoutErrors } from '../../src/arrangement/drawn-group.js';
 import { wayUp } from '../../src/arrangement/group-draws.js';
@@ -7,6 +6,7 @@ import type { ShareBand } from '../../src/arrangement/parallel-build.js';
 import { bandLoads, shareBand } from '../../src/arrangement/share-band.js';
 import { latinHypercube } from '../../src/statistics/latin-hypercube.js';
 import { randomFrom } from '../../src/statistics/random.js';
+import fc from '../property.js';
 import { madeProfile } from './made-profile.js';
 
 function bandOf(profiles: readonly ModuleProfile[], tolerance: number, loads: readonly number[]): ShareBand {

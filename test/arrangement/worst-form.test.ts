@@ -1,9 +1,9 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type Form, modulesOf } from '../../src/arrangement/build.js';
 import type { ModuleProfile } from '../../src/arrangement/module-profile.js';
 import { worstOf } from '../../src/arrangement/worst-form.js';
 import { limitOf, voltageOf } from '../../src/circuit/supply-line.js';
+import fc from '../property.js';
 import { madeProfile } from './made-profile.js';
 
 const alone = (name: string): Form => ({ kind: 'module', name });

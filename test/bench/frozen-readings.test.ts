@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { Guards, type GuardLimits, type Told } from '../../src/bench/guards.js';
 import type { Taken } from '../../src/bench/sample.js';
 import type { Bench, BenchDrivers } from '../../src/files/bench.js';
+import fc from '../property.js';
 import { nursery } from './nursery-bench.js';
 
 const limits: GuardLimits = {

@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { BlindSamples, guard, type GuardLimits, valueOf } from '../../src/bench/guards.js';
 import type { Taken } from '../../src/bench/sample.js';
+import fc from '../property.js';
 
 const limits: GuardLimits = {
   voltage: { value: 60, setBy: 'the bench' },

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import type { LoadLaw } from '../../src/circuit/load-law.js';
 import type { CurveLimit, ModuleCurve } from '../../src/circuit/module-curve.js';
+import fc from '../property.js';
 
 export const amount = (min: number, max: number): fc.Arbitrary<number> =>
   fc.double({ min, max, noNaN: true });

@@ -1,9 +1,9 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type BallastWanted, imbalanceByTolerance, smallestBallast } from '../../src/circuit/ballast.js';
 import { preferredFrom, preferredSeries } from '../../src/circuit/preferred-values.js';
 import { type GroupModule, worstSharing } from '../../src/circuit/worst-sharing.js';
 import { UnfitDataError } from '../../src/statistics/unfit-data-error.js';
+import fc from '../property.js';
 
 function brick(voltage: number, droop: number, expanded = { voltage: 0, droop: 0 }): GroupModule {
   return {

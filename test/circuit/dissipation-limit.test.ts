@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { currentWithin } from '../../src/circuit/dissipation-limit.js';
 import { inGroup, inStack, lineOf, limitOf, voltageOf } from '../../src/circuit/supply-line.js';
+import fc from '../property.js';
 
 const number = (min: number, max: number) => fc.double({ min, max, noNaN: true });
 const line = fc

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { earthRelation } from '../../src/circuit/earth-relation.js';
+import fc from '../property.js';
 
 const limits = { bondedBelow: 10, isolatedAbove: 1e6 };
 

@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
   type CurveLimit,
@@ -9,6 +8,7 @@ import {
   voltageAtCurrent,
   withLimitScaled,
 } from '../../src/circuit/module-curve.js';
+import fc from '../property.js';
 
 const line = { openCircuitVoltage: 15, droopResistance: 0.1 };
 const constantCurrent: ModuleCurve = { ...line, limit: { style: 'constant-current', current: 5 } };

@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type LoadLaw, currentDrawn } from '../../src/circuit/load-law.js';
 import { type ModuleCurve, currentAtVoltage } from '../../src/circuit/module-curve.js';
 import { operatingPoints } from '../../src/circuit/operating-point.js';
+import fc from '../property.js';
 
 const line = { openCircuitVoltage: 15, droopResistance: 0.1 };
 const constantCurrent: ModuleCurve = { ...line, limit: { style: 'constant-current', current: 5 } };

@@ -1,9 +1,9 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type LoadLaw, currentDrawn } from '../../src/circuit/load-law.js';
 import { type ModuleCurve, currentAtVoltage } from '../../src/circuit/module-curve.js';
 import { operatingPoints } from '../../src/circuit/operating-point.js';
 import { type Branch, type GroupPoint, groupPoints } from '../../src/circuit/parallel-group.js';
+import fc from '../property.js';
 import { amount, curvesWith, foldbacks, laws, steadyLimits } from './any-circuit.js';
 
 const brick: ModuleCurve = {

@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import published from '../../fixtures/reference/e-series.json' with { type: 'json' };
 import { nextPreferred, preferredFrom, preferredSeries } from '../../src/circuit/preferred-values.js';
 import { UnfitDataError } from '../../src/statistics/unfit-data-error.js';
+import fc from '../property.js';
 
 describe('the preferred values', () => {
   // Source: IEC 60063, as in fixtures/reference/e-series.json (public tables).

@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type LoadLaw, currentDrawn, needOf } from '../../src/circuit/load-law.js';
 import type { ModuleCurve } from '../../src/circuit/module-curve.js';
@@ -6,6 +5,7 @@ import { operatingPoints } from '../../src/circuit/operating-point.js';
 import { railVoltages } from '../../src/circuit/rail-voltages.js';
 import { type Link, type StringPoint, stringPoint } from '../../src/circuit/series-string.js';
 import { type ShockleyDiode, forwardVoltage } from '../../src/circuit/shockley-diode.js';
+import fc from '../property.js';
 import { amount, curvesWith, foldbacks, laws, steadyLimits } from './any-circuit.js';
 
 const brick: ModuleCurve = {

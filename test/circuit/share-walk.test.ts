@@ -1,9 +1,9 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type ClimbingBranch, climb } from '../../src/circuit/group-climb.js';
 import { knee } from '../../src/circuit/module-curve.js';
 import type { PastLimit } from '../../src/circuit/drawn-branch.js';
 import { ShareWalk, type WalkCorner } from '../../src/circuit/share-walk.js';
+import fc from '../property.js';
 import { amount, foldbacks, steadyLimits } from './any-circuit.js';
 
 const sag = 0.05;

@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type Branch, groupPoints } from '../../src/circuit/parallel-group.js';
 import { branchCurrents } from '../../src/circuit/shared-load.js';
+import fc from '../property.js';
 import { amount } from './any-circuit.js';
 
 describe('branches that feed one load, below all limits', () => {

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { forwardCurrent, forwardVoltage, thermalVoltage } from '../../src/circuit/shockley-diode.js';
+import fc from '../property.js';
 
 const silicon = { saturationCurrent: 1e-14, idealityFactor: 1, temperature: 300 };
 

@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type Branch, groupPoints } from '../../src/circuit/parallel-group.js';
 import { branchCurrents } from '../../src/circuit/shared-load.js';
@@ -15,6 +14,7 @@ import {
   voltageOf,
 } from '../../src/circuit/supply-line.js';
 import { UnfitDataError } from '../../src/statistics/unfit-data-error.js';
+import fc from '../property.js';
 
 const number = (min: number, max: number) => fc.double({ min, max, noNaN: true });
 const parts = fc.record({ voltage: number(14.5, 15.5), resistance: number(0.01, 0.3), limit: number(1, 6) });

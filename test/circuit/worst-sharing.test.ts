@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type UnlimitedBranch, branchCurrents } from '../../src/circuit/shared-load.js';
 import {
@@ -8,6 +7,7 @@ import {
   worstDissipation,
   worstSharing,
 } from '../../src/circuit/worst-sharing.js';
+import fc from '../property.js';
 
 /** Found by halves and not by Millman: the bus at which the branches give just what the load takes. */
 function byHalves(branches: readonly UnlimitedBranch[], load: number): readonly number[] {

@@ -1,3 +1,4 @@
+import { execFileSync } from 'node:child_process';
 import { cpSync, existsSync, mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -158,6 +159,22 @@ describe('combine --sheet', () => {
     expect(status).toBe(74);
     expect(existsSync(join(folder, 'no-such-folder'))).toBe(false);
     expect(readdirSync(folder).filter((name) => name.endsWith('.part'))).toEqual([]);
+  });
+
+  it('says so, too, where not even the looking for a half written one is possible', async () => {
+    const file = join(folder, 'no-folder');
+    writeFileSync(file, '');
+    const { status, stderr } = await combine('--series', ...K1, ...K3, '--sheet', join(file, 'sheet.html'));
+    expect(stderr).toContain("the build sheet can't be written");
+    expect(status).toBe(74);
+  });
+
+  it('does not wait for a pipe that nobody writes to', async () => {
+    const pipe = join(folder, 'pipe.html');
+    execFileSync('mkfifo', [pipe]);
+    const { status, stderr } = await combine('--series', ...K1, ...K3, '--sheet', pipe);
+    expect(stderr).toContain('is no build sheet, so it is not written over');
+    expect(status).toBe(64);
   });
 });
 

@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { ConnectionAddress } from '../../src/files/bench.js';
 import {
@@ -7,6 +6,7 @@ import {
   formatAddress,
   parseAddress,
 } from '../../src/files/connection-address.js';
+import fc from '../property.js';
 
 describe('an address is read', () => {
   it.each<[string, ConnectionAddress]>([

@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { driverOfChannel } from '../../src/files/driver-channel.js';
 import type { Driver } from '../../src/files/driver.js';
 import { parseDriver } from '../../src/files/read-driver.js';
+import fc from '../property.js';
 
 const text = `railproof: driver 1
 name: load-of-four

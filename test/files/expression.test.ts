@@ -1,8 +1,8 @@
 import { readdirSync, readFileSync } from 'node:fs';
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { expression, ExpressionError, longestSearched } from '../../src/files/expression.js';
 import { parseDriver } from '../../src/files/read-driver.js';
+import fc from '../property.js';
 
 /** Of the three on a machine that is also busy with other things. */
 function quickest(act: () => void): number {

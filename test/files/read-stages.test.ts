@@ -120,7 +120,7 @@ describe('one mistake is one line, at its place', () => {
     [
       'common: in+, rest: W2+,',
       'common: in+,',
-      "15:7: contacts.S3: a change-over contact has 'common', 'rest' and 'driven'",
+      "15:7: contacts.S3: a change-over contact has 'common', 'rest' and 'driven'; one that touches a single side is written as 'makes' or 'breaks', with two nodes",
     ],
     [
       'makes: [W1+, W2+]',

@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { stringify } from 'yaml';
 import { BadFileError } from '../../src/files/file-error.js';
 import { parseYaml } from '../../src/files/yaml-document.js';
+import fc from '../property.js';
 import { problemsOf } from './problems-of.js';
 
 const refused = (text: string): string[] => problemsOf(() => parseYaml(text, 'a.yaml'));

@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { RailproofError } from '../../src/errors/railproof-error.js';
 import { AddressError, formatAddress, parseAddress } from '../../src/files/connection-address.js';
@@ -8,6 +7,7 @@ import { readChannel, readFlag, readNumber } from '../../src/instrument/reading.
 import { ReplyNotUnderstoodError } from '../../src/instrument/reply-errors.js';
 import { parseScpiError } from '../../src/instrument/scpi-error.js';
 import { parseScpiNumber } from '../../src/instrument/scpi-number.js';
+import fc from '../property.js';
 
 const about = { address: 'tcp://127.0.0.1:5025', question: 'MEAS?' };
 

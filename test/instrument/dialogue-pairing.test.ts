@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { VirtualClock } from '../../src/clock/virtual-clock.js';
 import { RailproofError } from '../../src/errors/railproof-error.js';
 import { Dialogue } from '../../src/instrument/dialogue.js';
+import fc from '../property.js';
 import { type Arrival, VirtualLine } from './fixtures/virtual-line.js';
 
 const timeout = 1;

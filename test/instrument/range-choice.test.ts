@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { RangeChoice } from '../../src/instrument/range-choice.js';
 import type { Measurement } from '../../src/instrument/scpi-number.js';
+import fc from '../property.js';
 
 const ranges = [0.2, 2, 20, 200].map((upTo) => ({ upTo, select: [{ text: `RANG ${upTo}` }] }));
 const value = (volts: number): Measurement => ({ kind: 'value', value: volts });

@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { expression } from '../../src/files/expression.js';
 import { readChannel, readFlag, readNumber } from '../../src/instrument/reading.js';
+import fc from '../property.js';
 
 const about = { address: 'tcp://127.0.0.1:5025', question: 'VOL?' };
 

@@ -2,7 +2,6 @@ import { execFileSync } from 'node:child_process';
 import { mkdtemp, rm, truncate, writeFile } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import fc from 'fast-check';
 import { describe, expect, it, onTestFinished } from 'vitest';
 import type { Clock } from '../../src/clock/clock.js';
 import { EventClock } from '../../src/clock/event-clock.js';
@@ -12,6 +11,7 @@ import { Dialogue } from '../../src/instrument/dialogue.js';
 import type { Connection } from '../../src/instrument/connection.js';
 import { tracedConnection } from '../../src/instrument/traced-connection.js';
 import { replays } from '../../src/instrument/replay-connection.js';
+import fc from '../property.js';
 import { VirtualLine } from './fixtures/virtual-line.js';
 
 async function fileOf(text: string): Promise<string> {

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { ReplyReader } from '../../src/instrument/reply-reader.js';
+import fc from '../property.js';
 import reference from '../../fixtures/reference/scpi-488.json' with { type: 'json' };
 
 const bytesOf = (text: string): Uint8Array => Buffer.from(text, 'latin1');

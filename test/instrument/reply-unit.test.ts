@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { placesOf } from '../../src/instrument/reply-unit.js';
 import type { Dimension } from '../../src/quantity/quantity.js';
+import fc from '../property.js';
 
 const bytes = (text: string): string => Buffer.from(text, 'utf8').toString('latin1');
 

@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import reference from '../../fixtures/reference/scpi-488.json' with { type: 'json' };
 import { parseScpiError, standardErrors, standardText } from '../../src/instrument/scpi-error.js';
+import fc from '../property.js';
 
 describe('an entry of the error queue', () => {
   it.each([

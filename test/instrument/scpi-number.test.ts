@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import reference from '../../fixtures/reference/scpi-488.json' with { type: 'json' };
 import { formatScpiNumber, parseScpiNumber } from '../../src/instrument/scpi-number.js';
+import fc from '../property.js';
 
 const value = (number: number) => ({ kind: 'value', value: number });
 const overload = { kind: 'overload' };

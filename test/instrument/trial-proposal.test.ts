@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { Driver } from '../../src/files/driver.js';
 import { pauses, type Need } from '../../src/instrument/trial-pace.js';
 import { type Pace, proposalFor, roundedUp } from '../../src/instrument/trial-proposal.js';
+import fc from '../property.js';
 import { toyDriver } from './fixtures/toy-load.js';
 
 const heard: Need = { pause: 0, late: 0 };

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { visible } from '../../src/instrument/visible.js';
+import fc from '../property.js';
 
 describe('what is shown of bytes', () => {
   it.each([

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { bothMeasured, differenceOf, type Measured } from '../../src/judgement/difference.js';
+import fc from '../property.js';
 
 function found(value: number, expanded: number | null, more: Partial<Measured> = {}): Measured {
   return {

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { decimalExponent, product, shifted, shiftedText } from '../../src/quantity/decimal-text.js';
+import fc from '../property.js';
 
 describe('the decimal point moves in the text, and no digit changes', () => {
   it.each<[number, number, number | undefined, string]>([

@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
   formatInterval,
@@ -8,6 +7,7 @@ import {
 } from '../../src/quantity/format-quantity.js';
 import { parseQuantity, parseQuantityOrShare } from '../../src/quantity/parse-quantity.js';
 import { dimensions, references, type Dimension, type ReferenceName } from '../../src/quantity/quantity.js';
+import fc from '../property.js';
 
 const everyDimension = Object.keys(dimensions) as Dimension[];
 

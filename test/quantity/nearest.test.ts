@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { didYouMean, nearest } from '../../src/quantity/nearest.js';
+import fc from '../property.js';
 
 const steps = ['open-circuit', 'load-ramp', 'dropout-search', 'wait', 'operator'];
 

@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import {
   parseQuantity,
@@ -11,6 +10,7 @@ import {
   readQuantityOrAnyShare,
 } from '../../src/quantity/parse-quantity.js';
 import { dimensions, type Dimension } from '../../src/quantity/quantity.js';
+import fc from '../property.js';
 
 const everyDimension = Object.keys(dimensions) as Dimension[];
 

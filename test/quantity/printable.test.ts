@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { printable, printableLines } from '../../src/quantity/printable.js';
+import fc from '../property.js';
 
 describe('a printable text', () => {
   it('of whatever there is holds nothing that steers a terminal, and keeps what people write', () => {

@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { parseQuantity } from '../../src/quantity/parse-quantity.js';
 import { roundedDown } from '../../src/quantity/rounded-down.js';
+import fc from '../property.js';
 
 describe('a number rounded down', () => {
   it.each([

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { expect, it } from 'vitest';
 import { shown } from '../../src/quantity/shown-text.js';
+import fc from '../property.js';
 
 it.each<[string, string]>([
   ['4 Amp', "'4 Amp'"],

@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { expect, it } from 'vitest';
 import { dimensions, type Dimension } from '../../src/quantity/quantity.js';
 import { fromJsonUnit, toJsonUnit, ucumCode } from '../../src/quantity/ucum.js';
+import fc from '../property.js';
 
 // UCUM, case-sensitive codes: tables of base units, of derived units (Ohm, Cel, V, W) and of dimensionless
 // ones (%); written here from memory of the specification.

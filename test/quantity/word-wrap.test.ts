@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { fitted, wordWrap } from '../../src/quantity/word-wrap.js';
+import fc from '../property.js';
 
 describe('text for a terminal', () => {
   it('breaks between words, and keeps the lines it had', () => {

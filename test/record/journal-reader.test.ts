@@ -10,11 +10,11 @@ import {
 } from 'node:fs';
 import { setFlagsFromString } from 'node:v8';
 import { runInNewContext } from 'node:vm';
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type JournalEvent, mustBeSealed } from '../../src/record/journal-event.js';
 import { checkJournal, type Integrity, readJournal } from '../../src/record/journal-reader.js';
 import { newSealer, sealLine } from '../../src/record/seal.js';
+import fc from '../property.js';
 import { opened, readBack, shortRun, temporaryFolder, writeJournal } from './some-run.js';
 
 const place = temporaryFolder();

@@ -1,11 +1,11 @@
 import { spawnSync } from 'node:child_process';
 import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { dirname, join } from 'node:path';
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type JournalEvent, sealedEvents } from '../../src/record/journal-event.js';
 import { JournalWriter } from '../../src/record/journal-writer.js';
 import { RecordWriteError } from '../../src/record/record-error.js';
+import fc from '../property.js';
 import { anyEvent, opened, readBack, shortRun, temporaryFolder, writeJournal } from './some-run.js';
 
 const place = temporaryFolder();

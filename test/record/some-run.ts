@@ -1,11 +1,11 @@
 import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import fc from 'fast-check';
 import { afterAll } from 'vitest';
 import { type JournalEvent, journalFormat, phases, type TimedEvent } from '../../src/record/journal-event.js';
 import { checkJournal, type Integrity, readJournal } from '../../src/record/journal-reader.js';
 import { JournalWriter } from '../../src/record/journal-writer.js';
+import fc from '../property.js';
 
 /** A folder that is there for the tests of one file. */
 export function temporaryFolder(): (name: string) => string {

@@ -1,10 +1,10 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import sharing from '../../fixtures/reference/sharing-spice.json' with { type: 'json' };
 import type { LimitStyle, ModuleProfile } from '../../src/arrangement/module-profile.js';
 import { reverseDiodesOf } from '../../src/arrangement/reverse-diodes.js';
 import type { CurveLimit } from '../../src/circuit/module-curve.js';
 import { type Link, stringPoint } from '../../src/circuit/series-string.js';
+import fc from '../property.js';
 import { madeProfile } from '../arrangement/made-profile.js';
 
 // Source: own circuits, solved with ngspice 39 (Debian); see test/reference/sharing-networks.test.ts.

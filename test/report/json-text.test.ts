@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { jsonText } from '../../src/report/json-text.js';
+import fc from '../property.js';
 
 describe('JSON on a terminal', () => {
   it('means the same as any other JSON', () => {

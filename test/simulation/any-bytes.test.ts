@@ -1,10 +1,10 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { dialects } from '../../src/simulation/dialects/choose-dialect.js';
 import { INPUT_BUFFER } from '../../src/simulation/message-splitter.js';
 import { openSimulation } from '../../src/simulation/open-simulation.js';
 import { MessageSplitter } from '../../src/simulation/message-splitter.js';
 import { VirtualClock } from '../../src/clock/virtual-clock.js';
+import fc from '../property.js';
 import { hiccup, k1, loadDriver, meterDriver, simulationOf } from './bench-parts.js';
 
 const words = [

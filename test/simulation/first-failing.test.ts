@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { expect, it } from 'vitest';
 import { firstFailing } from '../../src/simulation/first-failing.js';
+import fc from '../property.js';
 
 it('the moment from which something fails is found to a microsecond, and it fails at that moment', () => {
   fc.assert(

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { INPUT_BUFFER, MessageSplitter } from '../../src/simulation/message-splitter.js';
+import fc from '../property.js';
 
 const bytes = (text: string): Uint8Array => Buffer.from(text, 'latin1');
 

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { attemptBegins, attempting, nextAttempt } from '../../src/simulation/retry.js';
+import fc from '../property.js';
 
 describe('a module that keeps trying', () => {
   it.each([

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { ModuleLimit, SimulatedModule } from '../../src/files/simulation-section.js';
+import fc from '../property.js';
 import { LEADS, brick, currentsOf, seen, under, voltagesOf, worldOf } from './circuit-play.js';
 
 // Common practice; there is no published source for the figures: two bricks that both read 12.34 V with no

@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type LoadLaw, currentDrawn } from '../../src/circuit/load-law.js';
 import { currentAtVoltage } from '../../src/circuit/module-curve.js';
@@ -8,6 +7,7 @@ import { type CircuitState, freshCircuit } from '../../src/simulation/circuit-st
 import type { SimulatedCircuit } from '../../src/simulation/resting-point.js';
 import { advance, onNewLoad, outputOf, powered, unpowered } from '../../src/simulation/virtual-circuit.js';
 import type { ModuleState } from '../../src/simulation/virtual-module.js';
+import fc from '../property.js';
 import { hiccup, k1 } from './bench-parts.js';
 
 const sinks = (current: number): LoadLaw => ({ kind: 'current', current, leastVoltage: 1, leads: 0.035 });

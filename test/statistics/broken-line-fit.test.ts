@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import {
@@ -7,6 +6,7 @@ import {
   type BrokenLineFit,
 } from '../../src/statistics/broken-line-fit.js';
 import { fitLine } from '../../src/statistics/line-fit.js';
+import fc from '../property.js';
 import { leastByGrid, leastByGaps } from './broken-line-by-hand.js';
 import { relativeError } from './relative-error.js';
 

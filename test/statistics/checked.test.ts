@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import {
@@ -8,6 +7,7 @@ import {
   UnfitDataError,
   type Values,
 } from '../../src/statistics/checked.js';
+import fc from '../property.js';
 import { relativeError } from './relative-error.js';
 
 const reading = fc.double({ min: -1e6, max: 1e6, noNaN: true });
@@ -62,7 +62,8 @@ describe('the checked statistics', () => {
       fc.property(readings, (values) => {
         const given = Object.freeze([...values]);
         const turned = [...values].reverse();
-        expect(median(given)).toBe(median(turned));
+        // A zero may come back with either sign.
+        expect(Math.abs(median(given) - median(turned))).toBe(0);
         expect(Math.abs(mean(given) - mean(turned))).toBeLessThanOrEqual(1e-9);
       }),
     );

@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { coverageInterval, medianOf } from '../../src/statistics/coverage-interval.js';
 import { orderStatistic } from '../../src/statistics/order-statistic.js';
 import { UnfitDataError } from '../../src/statistics/unfit-data-error.js';
+import fc from '../property.js';
 
 const numbers = fc
   .array(fc.oneof(fc.double({ min: -1e6, max: 1e6, noNaN: true }), fc.constantFrom(0, 1, 1e-12)), {

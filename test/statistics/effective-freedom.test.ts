@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import { effectiveDegreesOfFreedom } from '../../src/statistics/effective-freedom.js';
+import fc from '../property.js';
 import { relativeError } from './relative-error.js';
 
 const part = fc.record({

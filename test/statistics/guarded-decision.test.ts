@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import { decide, type GuardedValue } from '../../src/statistics/guarded-decision.js';
+import fc from '../property.js';
 
 const usable: GuardedValue = {
   value: 4.2,

@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import { regularisedIncompleteBeta } from '../../src/statistics/incomplete-beta.js';
+import fc from '../property.js';
 import { relativeError } from './relative-error.js';
 
 const share = fc.double({ min: 0.001, max: 0.999, noNaN: true });

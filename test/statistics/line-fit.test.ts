@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import { fitLine, predictLine, TooFewPointsError } from '../../src/statistics/line-fit.js';
+import fc from '../property.js';
 import { relativeError } from './relative-error.js';
 
 const coordinate = fc.integer({ min: -2000, max: 2000 }).map((value) => value / 64);

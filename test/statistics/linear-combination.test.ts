@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import {
@@ -7,6 +6,7 @@ import {
   type LinearCombinationOutcome,
 } from '../../src/statistics/linear-combination.js';
 import { coverageFactor } from '../../src/statistics/student-t.js';
+import fc from '../property.js';
 import { normalScatter } from './normal-scatter.js';
 import { relativeError } from './relative-error.js';
 

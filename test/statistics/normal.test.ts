@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import {
@@ -7,6 +6,7 @@ import {
   normalDistribution,
   normalQuantile,
 } from '../../src/statistics/normal.js';
+import fc from '../property.js';
 import { relativeError } from './relative-error.js';
 
 const z = fc.double({ min: -8, max: 8, noNaN: true });

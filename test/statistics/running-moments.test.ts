@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import { mean, sampleStandardDeviation } from '../../src/statistics/checked.js';
 import { RunningMoments } from '../../src/statistics/running-moments.js';
+import fc from '../property.js';
 import { relativeError } from './relative-error.js';
 
 const readings = fc.array(fc.double({ min: -1e4, max: 1e4, noNaN: true }), { minLength: 2, maxLength: 60 });

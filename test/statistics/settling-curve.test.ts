@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import { curveOfRate, reversed, settlingPoints, shapeAt } from '../../src/statistics/settling-curve.js';
+import fc from '../property.js';
 import { soak } from './settling-soak.js';
 
 const rate = fc.double({ min: 1e-4, max: 50, noNaN: true });

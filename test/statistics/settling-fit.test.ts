@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import { fitSettling } from '../../src/statistics/settling-fit.js';
 import { coverageFactor } from '../../src/statistics/student-t.js';
+import fc from '../property.js';
 import { relativeError } from './relative-error.js';
 import { asSettling, settlingOf, soak, type Soak } from './settling-soak.js';
 

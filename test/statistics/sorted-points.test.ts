@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import { sortedPoints } from '../../src/statistics/sorted-points.js';
+import fc from '../property.js';
 
 describe('points in order', () => {
   it('are taken as they are when they ascend, and turned when they descend', () => {

@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import { cutInStretches, leastSquares, momentsKept } from '../../src/statistics/stretches.js';
 import { fitLine } from '../../src/statistics/line-fit.js';
+import fc from '../property.js';
 
 const points = fc.array(fc.tuple(fc.integer({ min: 0, max: 40 }), fc.integer({ min: -50, max: 50 })), {
   minLength: 8,

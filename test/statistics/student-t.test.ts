@@ -1,8 +1,8 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 
 import { normalDistribution, normalQuantile } from '../../src/statistics/normal.js';
 import { coverageFactor, studentTDistribution, studentTQuantile } from '../../src/statistics/student-t.js';
+import fc from '../property.js';
 import { relativeError } from './relative-error.js';
 
 const freedom = fc.double({ min: 0.5, max: 2e6, noNaN: true });

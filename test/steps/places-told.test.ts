@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type ProofLook, tellPlaces } from '../../src/steps/places-told.js';
+import fc from '../property.js';
 
 const names = ['K1', 'K2', 'K3', 'K4'] as const;
 type Name = (typeof names)[number];

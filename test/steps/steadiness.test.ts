@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { firstUnsteady, type Probe } from '../../src/steps/steadiness.js';
+import fc from '../property.js';
 
 const resolution = 0.001;
 

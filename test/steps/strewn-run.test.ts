@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { fileURLToPath } from 'node:url';
 import { describe, expect, it } from 'vitest';
 import { Guards } from '../../src/bench/guards.js';
@@ -10,6 +9,7 @@ import type { Bench } from '../../src/files/bench.js';
 import { readDriver } from '../../src/files/read-driver.js';
 import type { JournalEvent } from '../../src/record/journal-event.js';
 import { stepKinds } from '../../src/steps/index.js';
+import fc from '../property.js';
 import { toyDriver, toyLoad } from '../instrument/fixtures/toy-load.js';
 import type { Arrival } from '../instrument/fixtures/virtual-line.js';
 import { k1, nobody } from './one-step.js';

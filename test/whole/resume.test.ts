@@ -11,10 +11,10 @@ import {
 } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { basename, join } from 'node:path';
-import fc from 'fast-check';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { loadResumed } from '../../src/cli/resume-plan.js';
 import type { Result } from '../../src/report/result.js';
+import fc from '../property.js';
 import { railproof as inProcess } from '../cli/in-process.js';
 import {
   differences,

@@ -1,9 +1,9 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { VirtualClock } from '../../../src/clock/virtual-clock.js';
 import type { Driver, Message } from '../../../src/files/driver.js';
 import { Instrument } from '../../../src/instrument/instrument.js';
 import { fillMessage, type OperationValues } from '../../../src/instrument/message.js';
+import fc from '../../property.js';
 import { type Family, family, familyNames } from './families.js';
 import { opened, readOn } from './open-family.js';
 import { virtualLineTo } from './serve-standard.js';

@@ -1,5 +1,5 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import fc from '../../property.js';
 import { family, familyNames } from './families.js';
 import type { MeterFunction } from './meter-tree.js';
 import { opened, readOn } from './open-family.js';

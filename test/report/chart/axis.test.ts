@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { axisOf, domainOf } from '../../../src/report/chart/axis.js';
+import fc from '../../property.js';
 
 describe('an axis', () => {
   it.each([

@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { spread } from '../../../src/report/chart/spread.js';
+import fc from '../../property.js';
 
 describe('labels along an edge', () => {
   it('stand where they want to when there is room', () => {

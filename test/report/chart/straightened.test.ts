@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type Place, straightened } from '../../../src/report/chart/straightened.js';
+import fc from '../../property.js';
 
 describe('a straightened line', () => {
   it('keeps only the ends of a straight one, and every corner', () => {

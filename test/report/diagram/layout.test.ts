@@ -1,4 +1,3 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { type Circuit, type Form, modulesOf } from '../../../src/arrangement/build.js';
 import { circuitDiagram } from '../../../src/report/diagram/circuit-diagram.js';
@@ -6,6 +5,7 @@ import { layout, type Surroundings } from '../../../src/report/diagram/layout.js
 import { partMarks } from '../../../src/report/diagram/part-marks.js';
 import type { Piece, Room } from '../../../src/report/diagram/pieces.js';
 import { roomOf } from '../../../src/report/diagram/room.js';
+import fc from '../../property.js';
 import { expectedNets, netsOf } from './nets.js';
 
 /** Forms of any depth, each module once. */

@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { attributeNames, element, htmlNames, svgNames, together } from '../../../src/report/page/markup.js';
 import { printable } from '../../../src/report/printable.js';
+import fc from '../../property.js';
 
 describe('a piece of markup', () => {
   it.each([

@@ -1,7 +1,7 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { channelLoad } from '../../../src/simulation/dialects/channel-load.js';
 import { standardLoad } from '../../../src/simulation/dialects/standard-load.js';
+import fc from '../../property.js';
 import { type LoadBody, loadBody, loadTree } from '../../instrument/standard/load-tree.js';
 import { StandardInstrument } from '../../instrument/standard/standard-instrument.js';
 import { anyLoad } from './any-load.js';

@@ -1,9 +1,9 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { Interpreter } from '../../../src/simulation/dialects/dialect.js';
 import { routedScanner } from '../../../src/simulation/dialects/routed-scanner.js';
 import { channelList, channelListText } from '../../../src/simulation/dialects/scpi-channel-list.js';
 import { Relays } from '../../../src/simulation/relays.js';
+import fc from '../../property.js';
 
 function awake(): Interpreter {
   if (routedScanner.role !== 'scanner') throw new Error('not a scanner');

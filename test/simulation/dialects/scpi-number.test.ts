@@ -1,6 +1,6 @@
-import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { nr3, numberParameter } from '../../../src/simulation/dialects/scpi-number.js';
+import fc from '../../property.js';
 
 const amperes = { unit: 'A', least: 0, most: 40 } as const;
 
