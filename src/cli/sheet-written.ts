@@ -1,6 +1,7 @@
-import { closeSync, existsSync, openSync, readSync } from 'node:fs';
+import { closeSync, existsSync, readSync } from 'node:fs';
 import { rename, rm, writeFile } from 'node:fs/promises';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+import { openRegular } from '../record/read-whole.js';
 import { pageMark } from '../report/page/page.js';
 
 /** A build sheet can't be kept where it was to be. */
@@ -41,7 +42,7 @@ export function checkSheet(path: string): void {
 
 function isSheet(path: string): boolean {
   try {
-    const file = openSync(path, 'r');
+    const file = openRegular(path);
     try {
       const bytes = Buffer.alloc(topOfPage);
       return bytes.toString('utf8', 0, readSync(file, bytes, 0, topOfPage, 0)).includes(pageMark);
@@ -61,7 +62,8 @@ export async function writeSheet(path: string, page: string): Promise<void> {
     await writeFile(beside, page, { flag: 'wx' });
     await rename(beside, path);
   } catch (error) {
-    await rm(beside, { force: true });
+    // Where it can't be taken away it was not written either.
+    await rm(beside, { force: true }).catch(() => undefined);
     throw new SheetNotKeptError(path, 'unwritable', error);
   }
 }
