@@ -9,6 +9,7 @@ import { dissipationText } from './dissipation-text.js';
 import { estimateCells } from './estimate-text.js';
 import { formInSigns } from './form-text.js';
 import { headingText } from './heading-text.js';
+import { leastAndMost, leastAndMostInWords } from './least-and-most.js';
 import { cautionsText, partsText } from './parts-text.js';
 import { prose, section, stopped, text } from './prose.js';
 import { concernsText, sourcesText } from './records-text.js';
@@ -35,19 +36,12 @@ export function stagesAsText(worked: StagedBuild, style: Style): string {
 }
 
 function answer(build: StagedBuild, style: Style): string {
-  const { wish, guaranteed } = build;
-  const [first, ...others] = guaranteed.flatMap(({ output, rising, falling }) => [
-    { output, current: rising.current, coming: '' },
-    { output, current: falling.current, coming: ', coming down' },
-  ]);
+  const { wish } = build;
+  const found = leastAndMost(build);
   const range = `from ${brief(wish.output.from, 'voltage')} to ${brief(wish.output.to, 'voltage')}`;
-  if (first === undefined)
+  if (found === undefined)
     return standingText(build, { what: `${wish.name} gives ${range}`, tooLittle: '' }, style);
-  const least = others.reduce((one, other) => (other.current < one.current ? other : one), first);
-  const most = others.reduce((one, other) => (other.current > one.current ? other : one), first);
-  const feeds = ({ output, current, coming }: typeof first): string =>
-    `${roundedDown(current, 'current')} at ${brief(output, 'voltage')}${coming}`;
-  const what = `${wish.name} gives ${range} and feeds at least ${roundedDown(least.current, 'current')} at each of them; the least is ${feeds(least)}, the most ${feeds(most)}`;
+  const what = `${wish.name} gives ${range} and feeds at least ${roundedDown(found.least.current, 'current')} at each of them; ${leastAndMostInWords(found)}`;
   return standingText(build, { what, tooLittle: what }, style);
 }
 

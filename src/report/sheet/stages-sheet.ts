@@ -3,6 +3,7 @@ import { roundedDown } from '../../quantity/rounded-down.js';
 import { brief } from '../build/brief.js';
 import { estimateCells } from '../build/estimate-text.js';
 import { formInSigns } from '../build/form-text.js';
+import { leastAndMost, leastAndMostInWords } from '../build/least-and-most.js';
 import { sentence } from '../build/prose.js';
 import { element, type Markup } from '../page/markup.js';
 import { section, type Sheet } from '../page/page.js';
@@ -36,20 +37,13 @@ export function stagesSheet(build: StagedBuild): Sheet {
   };
 }
 
-function answer({ standing, wish, guaranteed: points }: StagedBuild): readonly string[] {
-  if (standing.kind !== 'may-be-built') return [];
-  const all = points.flatMap(({ output, rising, falling }) =>
-    [rising, falling].map(({ current }) => ({ output, current })),
-  );
-  const [first] = all;
-  if (first === undefined) return [];
-  const least = all.reduce((one, other) => (other.current < one.current ? other : one), first);
-  const most = all.reduce((one, other) => (other.current > one.current ? other : one), first);
-  const said = ({ output, current }: typeof first): string =>
-    `${roundedDown(current, 'current')} at ${brief(output, 'voltage')}`;
+function answer(build: StagedBuild): readonly string[] {
+  const { standing, wish } = build;
+  const found = leastAndMost(build);
+  if (standing.kind !== 'may-be-built' || found === undefined) return [];
   return [
-    `From ${brief(wish.output.from, 'voltage')} to ${brief(wish.output.to, 'voltage')} it feeds at least ${roundedDown(least.current, 'current')} anywhere`,
-    `The least is ${said(least)}, the most ${said(most)}`,
+    `From ${brief(wish.output.from, 'voltage')} to ${brief(wish.output.to, 'voltage')} it feeds at least ${roundedDown(found.least.current, 'current')} anywhere`,
+    leastAndMostInWords(found),
   ];
 }
 

@@ -129,3 +129,12 @@ it('has a column of imbalances only where modules stand side by side', () => {
   expect(buildAsText(paired, plainStyle)).toContain('worst imbalance');
   expect(buildAsText(single, plainStyle)).not.toContain('imbalance');
 });
+
+it('of a staged supply that feeds least while its output comes down says so', () => {
+  const staged = madeStages({ standing: { kind: 'may-be-built' } });
+  const guaranteed = staged.guaranteed.map((point, index) =>
+    index === 1 ? { ...point, falling: { ...point.falling, current: 0.5 } } : point,
+  );
+  const page = buildPage({ ...staged, guaranteed }, made).replaceAll('\u00a0', ' ');
+  expect(page).toMatch(/The least is 500 mA at [\d.]+ V, coming down, the most /);
+});
