@@ -44,7 +44,11 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     .addHelpText('after', exitStatusHelp);
 
   const command = (usage: string, description: string, example: string): Command =>
-    program.command(usage).description(description).addHelpText('after', `\nExample:\n  ${example}\n`);
+    program
+      .command(usage)
+      .description(description)
+      .addHelpText('after', `\nExample:\n  ${example}\n`)
+      .showHelpAfterError(`(railproof help ${usage.replace(/ .*/, '')} shows an example)`);
   const json = (): Option => new Option('--json', 'print one JSON object instead of text');
   const ballast = (): Option =>
     new Option(

@@ -187,7 +187,7 @@ describe('combine refuses', () => {
       /--parallel and --series are two things/,
     ],
     ['neither of them', pair, /nothing says how the modules are to be joined/],
-    ['no modules', ['--parallel'], /missing required argument 'run'/],
+    ['no modules', ['--parallel'], /missing required argument 'run' \(railproof help combine shows/],
     ['one module alone', ['--parallel', ...K1], /needs two modules at least/],
     ['one module in a stack', ['--series', ...K1], /two modules/],
     [

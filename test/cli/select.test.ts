@@ -81,7 +81,7 @@ describe('select', () => {
   });
 
   it.each<[string, readonly string[], RegExp]>([
-    ['no drawer', ['--group', '2'], /missing required argument 'folder'/],
+    ['no drawer', ['--group', '2'], /missing required argument 'folder'\n\(railproof help select shows/],
     ['nothing to put together', [drawer], /nothing says what is to be put together/],
     ['groups of none', [drawer, '--group', '0'], /--group is '0'. Give a whole number from 1/],
     ['half a stack', [drawer, '--stack', '1.5'], /--stack is '1.5'/],
