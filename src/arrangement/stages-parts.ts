@@ -3,7 +3,6 @@ import { resistorRating } from '../circuit/resistor-rating.js';
 import { formatExact, formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Volts, Watts } from '../quantity/quantity.js';
 import type { Part } from './build.js';
-import { modulesOf } from './build.js';
 import { gradeFor } from './diode-grade.js';
 import { hasStack, type LaidOut } from './laid-out.js';
 import { moduleParts } from './module-parts.js';
@@ -82,16 +81,14 @@ function ballastPart(
 
 /**
  * Each module keeps its diode in every arrangement, so it is bought for the worst of them. One that is never in a
- * stack has one as well, as heavy as the heaviest: the diagrams show it. In the order of the highest stack's diagram.
+ * stack has one as well, as heavy as the heaviest: the diagrams show it. Numbered in the order of the modules.
  */
 function reverseDiodes(profiles: readonly ModuleProfile[], laid: readonly LaidOut[]): readonly Part[] {
-  const stacked = laid.findLast(({ found }) => hasStack(found.circuit.form))?.found.circuit.form;
-  if (stacked === undefined) return [];
+  if (!laid.some(({ found }) => hasStack(found.circuit.form))) return [];
   const found = laid.flatMap((each) => formDiodesOf(each.found.circuit.form, profiles));
-  const order = [...new Set([...modulesOf(stacked), ...profiles.map(({ name }) => name)])];
   return seriesParts(
     [],
-    order.flatMap((name) => {
+    profiles.flatMap(({ name }) => {
       const own = found.filter(({ module }) => module === name);
       const heaviest = heaviestOf(own.length > 0 ? own : found);
       return heaviest === undefined ? [] : [{ ...heaviest, module: name }];

@@ -1,5 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { buildStages } from '../../src/arrangement/build-stages.js';
+import { partMarks } from '../../src/report/diagram/part-marks.js';
+import { formDiodesOf } from '../../src/arrangement/reverse-diodes.js';
 import { bricks, valveBench } from './staged.js';
 import { changes } from './switched.js';
 
@@ -36,6 +38,31 @@ describe('the parts of a staged supply', () => {
     expect(marks).toContain('D1 of the switching');
     expect(marks).toContain('R1 of the switching');
     expect(marks).toContain('S2');
+  });
+
+  it('have at each module the mark that every arrangement is drawn with, and what its diode must bear', () => {
+    const uneven = bricks({
+      W1: { recommended: 6, usable: 8, dropout: 9 },
+      W3: { recommended: 1.2, usable: 1.5, dropout: 1.6 },
+    }).reverse();
+    const { arrangements, parts } = buildStages(uneven, valveBench());
+    const names = uneven.map(({ name }) => name);
+    expect(names).toEqual(['W3', 'W2', 'W1']);
+    const current = (mark: string): number =>
+      Number(
+        /([\d.]+) A/.exec(parts.find(({ marks }) => marks.includes(mark))?.ratings.join(' ') ?? '')?.[1],
+      );
+    const bought = arrangements.flatMap(({ circuit }) => {
+      const marks = partMarks(circuit, names).reverse;
+      return formDiodesOf(circuit.form, uneven).map(({ module, rating }) => {
+        const asked = current(marks.get(module) ?? 'none');
+        expect(asked).toBeGreaterThanOrEqual(rating.current);
+        return `${module} ${marks.get(module) ?? ''} ${asked}`;
+      });
+    });
+    // Not one weight for all, or a wrong mark would not be seen.
+    expect(new Set(bought.map((each) => each.split(' ')[2])).size).toBeGreaterThan(1);
+    expect(new Set(bought)).toHaveLength(3);
   });
 
   it('ask for no heat sink that lets the case get hotter than it may', () => {

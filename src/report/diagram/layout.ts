@@ -12,6 +12,8 @@ export interface Surroundings {
   readonly earthed?: ReadonlySet<string>;
   /** What the circuit feeds, where it is not the output itself. */
   readonly feeds?: string;
+  /** The modules of every arrangement, where this is one of several: their parts keep their numbers. */
+  readonly all?: readonly string[];
 }
 
 /** A part of the circuit: its lower end at the origin, its upper one straight above. */
@@ -25,7 +27,7 @@ const gap = 28;
 
 /** All pieces of a circuit: plus at the top, 0 V at the bottom, both brought out to the right. */
 export function layout(circuit: Circuit, surroundings: Surroundings = {}): readonly Piece[] {
-  const marks = partMarks(circuit);
+  const marks = partMarks(circuit, surroundings.all);
   const { pieces, height } = branchOf(circuit.form, (name) => column(name, circuit, marks, surroundings));
   return [...pieces, ...output(roomOfAll(pieces).right, height, surroundings)];
 }

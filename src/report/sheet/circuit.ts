@@ -1,4 +1,4 @@
-import { type Circuit, modulesOf } from '../../arrangement/build.js';
+import { type Circuit, type Form, modulesOf } from '../../arrangement/build.js';
 import type { ModuleProfile } from '../../arrangement/module-profile.js';
 import { listed } from '../../quantity/listed.js';
 import type { AnyBuild } from '../build/any-build.js';
@@ -28,9 +28,9 @@ export function circuitFigure(
   title: string,
   circuit: Circuit,
   modules: readonly ModuleProfile[],
-  feeds?: string,
+  within?: Pick<Surroundings, 'feeds' | 'all'>,
 ): Markup {
-  const words = inWords(circuit);
+  const words = inWords(circuit, within?.all);
   const earthed = new Set(
     modules.filter(({ earth }) => earth?.relation === 'bonded').map(({ name }) => name),
   );
@@ -40,7 +40,7 @@ export function circuitFigure(
       return module === undefined ? '' : plateOf(module);
     },
     earthed,
-    ...(feeds === undefined ? {} : { feeds }),
+    ...within,
   };
   return element(
     'figure',
@@ -50,8 +50,8 @@ export function circuitFigure(
   );
 }
 
-function inWords(circuit: Circuit): string {
-  const marks = partMarks(circuit);
+function inWords(circuit: Circuit, all?: readonly string[]): string {
+  const marks = partMarks(circuit, all);
   const { form } = circuit;
   const whole = form.kind === 'module' ? `${form.name} alone` : formInWords(form);
   return [
@@ -61,17 +61,23 @@ function inWords(circuit: Circuit): string {
     ...(marks.or.size > 0 ? [`diodes ${range(marks.or)} in series, so that nothing flows back`] : []),
   ]
     .join('; ')
-    .concat(
-      modulesOf(form).length > 1 && hasParts(circuit) ? '; numbered in the order of the modules.' : '.',
-    );
+    .concat(hasParts(circuit) ? numbering(form, all) : '.');
+}
+
+function numbering(form: Form, all?: readonly string[]): string {
+  if (all !== undefined) return '; what stands at a module has the same number in every arrangement.';
+  return modulesOf(form).length > 1 ? '; numbered in the order of the modules.' : '.';
 }
 
 function hasParts({ ballast, reverseDiodes, orDiodes }: Circuit): boolean {
   return ballast !== undefined || reverseDiodes || orDiodes;
 }
 
-/** `R1 and R2`, `R1 to R4`. */
+/** `R1 and R2`, `R1 to R4`, `R1, R4 and R2`. */
 function range(marks: ReadonlyMap<string, string>): string {
   const all = [...marks.values()];
-  return all.length < 3 ? listed(all) : `${all[0] ?? ''} to ${all.at(-1) ?? ''}`;
+  const [first = '', last = ''] = [all.at(0), all.at(-1)];
+  const places = all.map((mark) => Number(mark.slice(1)));
+  const isRow = places.every((place, index) => place === (places[0] ?? 0) + index);
+  return all.length > 2 && isRow ? `${first} to ${last}` : listed(all);
 }

@@ -32,17 +32,20 @@ export function partsSection(build: AnyBuild): Markup | undefined {
 
 /** Whether a part stands in the circuit; what is optional does not. */
 function isDrawn(build: AnyBuild, marks: readonly string[]): boolean {
-  const drawn = new Set(circuitsOf(build).flatMap(marksOf));
+  const drawn = new Set(marksOf(build));
   return marks.every((mark) => drawn.has(mark));
 }
 
-function circuitsOf(build: AnyBuild): readonly Circuit[] {
-  if (build.kind === 'stages') return build.arrangements.map(({ circuit }) => circuit);
-  return build.circuit === undefined ? [] : [build.circuit];
+function marksOf(build: AnyBuild): readonly string[] {
+  if (build.kind === 'stages') {
+    const all = build.modules.map(({ name }) => name);
+    return build.arrangements.flatMap(({ circuit }) => marksIn(circuit, all));
+  }
+  return build.circuit === undefined ? [] : marksIn(build.circuit);
 }
 
-function marksOf(circuit: Circuit): readonly string[] {
-  const { ballast, reverse, or } = partMarks(circuit);
+function marksIn(circuit: Circuit, all?: readonly string[]): readonly string[] {
+  const { ballast, reverse, or } = partMarks(circuit, all);
   return [...modulesOf(circuit.form), ...ballast.values(), ...reverse.values(), ...or.values()];
 }
 

@@ -98,7 +98,10 @@ function arrangements(build: StagedBuild): Markup {
       provisional(build),
       each.map(({ name, circuit }, index) => [
         element('h3', {}, `Circuit: ${name}`),
-        circuitFigure(`circuit-${index + 1}`, `Circuit: ${name}`, circuit, modules, 'linear stage'),
+        circuitFigure(`circuit-${index + 1}`, `Circuit: ${name}`, circuit, modules, {
+          feeds: 'linear stage',
+          all: modules.map(({ name: module }) => module),
+        }),
       ]),
     ],
   );

@@ -123,6 +123,25 @@ describe('a circuit diagram, of any depth', () => {
     expect([earths(new Set()), earths(new Set(['K2']))]).toEqual([0, 1]);
   });
 
+  it('numbers the parts of a module alike in every arrangement of the same modules', () => {
+    const stack = (...names: string[]): Circuit => ({
+      form: { kind: 'stack', of: names.map((name) => ({ kind: 'module', name })) },
+      ballast: { resistance: 0.1, tolerance: 0.05 },
+      reverseDiodes: true,
+      orDiodes: true,
+    });
+    const { ballast, reverse, or } = partMarks(stack('K3', 'K2'), ['K1', 'K2', 'K3']);
+    expect([ballast, reverse, or].map((marks) => [...marks])).toEqual(
+      ['R3 R2', 'D3 D2', 'D6 D5'].map((both) => {
+        const [third, second] = both.split(' ');
+        return [
+          ['K3', third],
+          ['K2', second],
+        ];
+      }),
+    );
+  });
+
   it('numbers the parts in the order of the modules, diodes across the outputs before those in series', () => {
     const { ballast, reverse, or } = partMarks({
       form: { kind: 'stack', of: ['K2', 'K1'].map((name) => ({ kind: 'module', name })) },
