@@ -43,7 +43,7 @@ describe('combine --parallel', () => {
     expect(answerIn(stdout)).toMatch(
       /^May be built: K1 and K2 side by side through \d+ mΩ each feed up to [4-7]\.\d\d A continuously\./,
     );
-    expect(stdout).toMatch(/^Ballast {3}the smallest preferred value for 10 % imbalance$/m);
+    expect(stdout).toMatch(/^Ballast {3}the least of E12 \(IEC 60063\) for 10 % imbalance$/m);
     expect(stdout).toMatch(/ ± 1 % {2}in series with each module$/m);
     expect(stderr).toBe('');
     expect(status).toBe(0);

@@ -17,13 +17,17 @@ export function ballastText({ ballast, wish, standing }: ParallelBuild, style: S
       if (standing.kind === 'must-not-be-built') return '';
       return section('Ballast', [prose(sentence(`None does what is wished: ${ballast.why}`))], style);
     case 'resistor': {
-      const wished =
-        wish.ballast.kind === 'given'
-          ? 'as it was given'
-          : `the smallest preferred value for ${formatQuantity(wish.ballast.most, 'ratio')} imbalance`;
-      return section('Ballast', alignTable(rowsOf(ballast), ['left', 'left', 'left']), style, wished);
+      const origin = ballastOrigin(wish);
+      return section('Ballast', alignTable(rowsOf(ballast), ['left', 'left', 'left']), style, origin);
     }
   }
+}
+
+/** Why it is that value. */
+export function ballastOrigin({ ballast, load }: ParallelBuild['wish']): string {
+  if (ballast.kind === 'given') return 'as it was given';
+  const asked = load === undefined ? '' : ' and the load asked for';
+  return `the least of E12 (IEC 60063) for ${formatQuantity(ballast.most, 'ratio')} imbalance${asked}`;
 }
 
 function rowsOf(ballast: ResistorChosen): string[][] {

@@ -1,10 +1,9 @@
 import type { Estimate } from '../../arrangement/build.js';
 import type { ModuleLost, ParallelBuild } from '../../arrangement/parallel-build.js';
-import { formatQuantity } from '../../quantity/format-quantity.js';
 import { listed } from '../../quantity/listed.js';
 import type { Dimension } from '../../quantity/quantity.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
-import { imbalanceWithout } from '../build/ballast-text.js';
+import { ballastOrigin, imbalanceWithout } from '../build/ballast-text.js';
 import { brief, chance, loadInWords, namesOf } from '../build/brief.js';
 import { estimateCells, estimateInWords } from '../build/estimate-text.js';
 import { sentence } from '../build/prose.js';
@@ -88,17 +87,13 @@ function ballastRows({ ballast, wish }: ParallelBuild): readonly NumberRow[] {
       return [['Ballast', 'none will do', '', sentence(ballast.why)]];
     case 'resistor': {
       const { resistance, tolerance, dissipation, dissipationAtLimit, rating, voltageCost } = ballast;
-      const chosen =
-        wish.ballast.kind === 'given'
-          ? 'As it was given'
-          : `The smallest preferred value (IEC 60063) for ${formatQuantity(wish.ballast.most, 'ratio')} imbalance`;
       const heat = `${brief(dissipation, 'power')} of heat at most in use, ${brief(dissipationAtLimit, 'power')} with its module at its limit`;
       return [
         [
           'Ballast, each',
           `${brief(resistance, 'resistance')} ± ${brief(tolerance, 'ratio')}`,
           '',
-          `${chosen}.`,
+          sentence(ballastOrigin(wish)),
         ],
         ['Ballast to buy', rating === undefined ? 'none will do' : brief(rating, 'power'), '', `${heat}.`],
         ['Voltage it costs', brief(voltageCost, 'voltage'), '', 'Across each ballast at full load.'],

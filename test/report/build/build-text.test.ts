@@ -123,6 +123,10 @@ describe('the text of what may be built', () => {
 
   it('tells a load that was asked for as it was asked for', () => {
     expect(plain(pair({ load: 4.75 }))).toMatch(/^Shares at 4\.75 A {3}the load asked for/m);
+    const chosen = pair({ load: 4.75, ballast: { kind: 'for-imbalance', most: 0.4 } });
+    expect(plain(chosen)).toMatch(
+      /^Ballast {3}the least of E12 \(IEC 60063\) for 40 % imbalance and the load asked for$/m,
+    );
   });
 
   it('names the record of every number, with its time, and how it ended where that was not well', () => {
