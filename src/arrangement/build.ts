@@ -27,6 +27,8 @@ export interface Concern {
   readonly kind:
     /** Measured long ago. */
     | 'old'
+    /** Measured in the future, by its own clock. */
+    | 'dated-ahead'
     /** A later record tells of a change to the module. */
     | 'changed-since'
     /** The uncertainty is too large for what is asked. */
@@ -45,6 +47,8 @@ export interface Concern {
     | 'not-accepted'
     /** Its records describe it in different words, or disagree on its earth: perhaps two modules go by one name. */
     | 'described-otherwise'
+    /** What it is put into is recommended for hardly more with it than without it. */
+    | 'of-little-use'
     /** From a simulated bench: for practice only. */
     | 'simulated';
   readonly module: string;

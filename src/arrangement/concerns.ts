@@ -5,6 +5,7 @@ import type { Concern } from './build.js';
 import { changesSince } from './changes-since.js';
 import type { ModuleProfile, Taken } from './module-profile.js';
 import { earthHeardOf, heardOf, type ModuleRecords, newestOfEach, sourceOf } from './module-records.js';
+import { shortened } from './shortened.js';
 import { wasWarmed } from './recommended.js';
 import type { RecordSource, UnderstoodRecord } from './understood-record.js';
 import { type Use, usesOf } from './uses.js';
@@ -17,6 +18,8 @@ type Told = Pick<Concern, 'kind' | 'text'> & Partial<Pick<Concern, 'run' | 'weig
 
 /** Capacitors age, and calibrations run out, in about that time. Common practice, no published source. */
 const oldAfterDays = 365;
+/** Clocks that are right may be apart by as much: one may have been set to the time of another place. */
+const clocksDifferDays = 1;
 /** Of modules whose limits are known no better than this, nobody can say which is the weaker. Chosen, no published source. */
 const coarseLimit = 0.05;
 
@@ -30,6 +33,7 @@ export function concernsOf(module: ModuleRecords, profile: Profile, today: Date)
     ...offLabel(profile),
     ...uses.flatMap((use) => changed(module, use)),
     ...uses.flatMap((use) => old(use, today)),
+    ...uses.flatMap((use) => datedAhead(module, use, today)),
     ...limitUnknown(profile.usable),
     ...coarse(profile),
     ...(profile.limitStyle === undefined ? [styleUnknown] : []),
@@ -135,7 +139,7 @@ function changed(module: ModuleRecords, { from, mustBeFresh }: Use): readonly To
   const record = [...module.alone, ...module.together].find(({ run }) => run === from.run);
   const changes = record === undefined ? [] : changesSince(record, module);
   if (changes.length === 0) return [];
-  const what = changes.map((change) => `${change.what}, ${change.date}`).join('; ');
+  const what = changes.map((change) => `${shortened(change.what)}, ${change.date}`).join('; ');
   return [
     {
       kind: 'changed-since',
@@ -150,6 +154,31 @@ function old({ from }: Use, today: Date): readonly Told[] {
   const days = (today.getTime() - Date.parse(from.began)) / 86_400_000;
   if (!(days > oldAfterDays)) return [];
   return [{ kind: 'old', run: from.run, text: `its ${dated(from)} is more than a year old: run it again` }];
+}
+
+/**
+ * Its age can't be told. Where it stands against another of its procedure, or against a change, it counts as the
+ * newest for ever, whatever was found since.
+ */
+function datedAhead(module: ModuleRecords, { from }: Use, today: Date): readonly Told[] {
+  const days = (Date.parse(from.began) - today.getTime()) / 86_400_000;
+  if (!(days > clocksDifferDays)) return [];
+  const records = [...module.alone, ...module.together];
+  const others = records.filter(
+    ({ run, header }) => run !== from.run && header.procedure.name === from.procedure,
+  );
+  const wasChanged = records.some(({ header }) =>
+    header.modules.some(({ name, changes }) => name === module.name && changes.length > 0),
+  );
+  const hides = others.length > 0 || wasChanged;
+  return [
+    {
+      kind: 'dated-ahead',
+      run: from.run,
+      weight: hides ? 'hinders' : 'weakens',
+      text: `its ${dated(from)} lies in the future, so a clock was wrong and nobody knows ${hides ? 'what came after it' : 'how old it is'}: set the clocks, and run it again`,
+    },
+  ];
 }
 
 function limitUnknown({ bound, value, from }: Taken): readonly Told[] {
@@ -207,7 +236,11 @@ const simulated: Told = {
   text: 'it was measured on a simulated bench, for practice only: measure the real one before anything is built',
 };
 
-/** What a later record found again, whatever it found, is not held against it any more. */
+/**
+ * What a later record found again, whatever it found, is not held against it any more. What it can't give in current
+ * is in its numbers, and what is built is made for those; a voltage, a warmth or an answer that was required for
+ * safety is in none of them, and refuses it.
+ */
 function notAccepted(module: ModuleRecords): readonly Told[] {
   return newestOfEach(module.alone.map((record) => ({ record }))).flatMap(({ record }) => {
     const unmet = record.unmet.filter(({ finding }) => {
@@ -220,16 +253,31 @@ function notAccepted(module: ModuleRecords): readonly Told[] {
       {
         kind: 'not-accepted' as const,
         run: record.run,
+        weight: unmet.some((one) => bearsOnSafety(module, one.finding))
+          ? ('hinders' as const)
+          : ('weakens' as const),
         text: `it did not conform in its ${dated(sourceOf(record))} (required: ${listed(required)}): see that it is good enough for this`,
       },
     ];
   });
 }
 
+/**
+ * One that is bonded to earth is what many are made to be, and whoever stacks it is refused by where it stands; one
+ * that leaks is what none is made to be.
+ */
+function bearsOnSafety(module: ModuleRecords, finding: string): boolean {
+  if (finding === 'earth-relation' || finding === 'earth-resistance')
+    return earthHeardOf(module).at(-1)?.finding.value !== 'bonded';
+  return (
+    finding === 'open-circuit-voltage' || finding === 'temperature-rise' || finding.startsWith('answer-of-')
+  );
+}
+
 function describedOtherwise({ alone }: ModuleRecords): readonly Told[] {
   const words = [...new Set(alone.flatMap(({ header }) => header.modules.map((one) => one.description)))];
   if (words.length < 2) return [];
-  const quoted = words.map((one) => `"${one}"`);
+  const quoted = words.map((one) => `"${shortened(one)}"`);
   return [
     {
       kind: 'described-otherwise',

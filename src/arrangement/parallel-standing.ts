@@ -5,14 +5,19 @@ import type { Amperes, Ratio } from '../quantity/quantity.js';
 import { roundedDown } from '../quantity/rounded-down.js';
 import type { Concern, Standing } from './build.js';
 import { usualMismatch } from './forbidden-connection.js';
+import { groupOf } from './group-form.js';
 import type { ModuleProfile } from './module-profile.js';
 import type { ParallelBuild, ParallelWish } from './parallel-build.js';
 import { standingOf } from './standing-of.js';
+import { worstOf } from './worst-form.js';
 
 /** Of the label's voltage: labels that differ by more are of different modules. */
 const alikeLabels: Ratio = 0.01;
 /** The most that ballasts may cost of the lowest open-circuit voltage, as where one is chosen. */
 const mostCost: Ratio = 0.1;
+
+/** Of what a module is recommended for alone: one that adds less is wasted. Chosen, no published source. */
+const littleUse: Ratio = 0.1;
 
 interface Found {
   readonly ballast: ParallelBuild['ballast'];
@@ -31,7 +36,6 @@ export function parallelStanding(
   wish: ParallelWish,
   found: Found,
 ): { readonly standing: Standing; readonly concerns: readonly Concern[] } {
-  const concerns = profiles.flatMap((profile) => profile.concerns);
   const refusals = [
     ...differentLabels(profiles),
     ...farApart(profiles),
@@ -39,7 +43,11 @@ export function parallelStanding(
     ...ballastRefusals(profiles, found),
     ...tooMuch(profiles, wish, found),
   ];
-  return { standing: standingOf({ refusals, doubts: [], concerns }), concerns };
+  const concerns = [
+    ...profiles.flatMap((profile) => profile.concerns),
+    ...(refusals.length > 0 ? [] : ofLittleUse(profiles, wish, found)),
+  ];
+  return { standing: standingOf({ refusals, doubts: worseThanBest(profiles, found), concerns }), concerns };
 }
 
 function differentLabels(profiles: readonly ModuleProfile[]): readonly string[] {
@@ -77,6 +85,42 @@ function recommendedForNothing({ name, recommended }: ModuleProfile): readonly s
   return recommended.current > 0
     ? []
     : [`${name} is recommended for nothing by its records: ${recommended.why}.`];
+}
+
+/** By the worst case, which is what is recommended of anything. */
+function worseThanBest(profiles: readonly ModuleProfile[], { recommended }: Found): readonly string[] {
+  const best = bestOf(profiles);
+  if (best === undefined || recommended >= best.recommended.current) return [];
+  return [
+    `The group is recommended for ${roundedDown(recommended, 'current')}, less than ${best.name} alone, ${roundedDown(best.recommended.current, 'current')}: the others do it no good. Build with ${best.name} alone, or put modules side by side that are alike.`,
+  ];
+}
+
+function bestOf(profiles: readonly ModuleProfile[]): ModuleProfile | undefined {
+  return profiles.toSorted((one, other) => other.recommended.current - one.recommended.current).at(0);
+}
+
+/** Those without which the group is recommended for hardly less. */
+function ofLittleUse(
+  profiles: readonly ModuleProfile[],
+  { tolerance }: Pick<ParallelWish, 'tolerance'>,
+  { ballast, recommended }: Found,
+): readonly Concern[] {
+  const resistor = ballast.kind === 'resistor' ? { resistance: ballast.resistance, tolerance } : undefined;
+  return profiles.flatMap((profile): readonly Concern[] => {
+    const rest = profiles.filter((each) => each !== profile);
+    const without = worstOf(groupOf(rest), profiles, resistor).limit;
+    if (recommended - without >= littleUse * profile.recommended.current) return [];
+    return [
+      {
+        kind: 'of-little-use',
+        module: profile.name,
+        run: undefined,
+        weight: 'weakens',
+        text: `without it the group is recommended for ${roundedDown(without, 'current')}, with it for ${roundedDown(recommended, 'current')}: leave it out, or put it with modules that are more like it`,
+      },
+    ];
+  });
 }
 
 function ballastRefusals(profiles: readonly ModuleProfile[], { ballast }: Found): readonly string[] {

@@ -11,6 +11,7 @@ import {
   newestOfEach,
   sourceOf,
 } from './module-records.js';
+import { shortened } from './shortened.js';
 import { notBelowZero, takenFrom } from './taken.js';
 
 /**
@@ -31,7 +32,7 @@ export function profileOf(
   const usable = lowestUsable(module, line);
   const profile = {
     name,
-    description: described.description,
+    description: shortened(described.description),
     label: { voltage: described.rated.voltage, current: described.rated.current },
     protectionClass: described.protectionClass,
     input: described.input,

@@ -87,6 +87,7 @@ export function standingOfSupply(
     concerns: [
       ...modulesIn(supply).flatMap(({ concerns }) => concerns),
       ...supply.slice(1).flatMap(({ modules }, index) => unknownIn(modules, rails[index + 1])),
+      ...groups.flatMap(({ concerns }) => concerns.filter(({ kind }) => kind === 'of-little-use')),
     ],
   };
 }

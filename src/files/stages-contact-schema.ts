@@ -55,7 +55,9 @@ export const contactSchema: z.ZodType<Nameless<StagesContact>> = z
     if (breaks !== undefined) return { kind: 'break', joins: breaks };
     if (!changesOver) return refuse(notOneOf);
     if (common === undefined || rest === undefined || driven === undefined)
-      return refuse("a change-over contact has 'common', 'rest' and 'driven'");
+      return refuse(
+        "a change-over contact has 'common', 'rest' and 'driven'; one that touches a single side is written as 'makes' or 'breaks', with two nodes",
+      );
     return { kind: 'change-over', common, rest, driven, bridges: bridges ?? false };
   });
 
