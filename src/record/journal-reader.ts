@@ -10,7 +10,10 @@ export type Integrity =
   | { readonly kind: 'whole'; readonly lines: number; readonly bytes: number }
   /** It ends without its last event; everything up to the last whole line is there. */
   | { readonly kind: 'cut-off'; readonly lines: number; readonly bytes: number; readonly tornBytes: number }
-  /** A seal does not hold or a line is no event; believed up to the last seal that holds. */
+  /**
+   * A seal does not hold, and it is believed up to the last one that does; or a line is no event, and it is believed
+   * up to there, though in one that was cut off nothing seals the last lines.
+   */
   | {
       readonly kind: 'damaged';
       readonly lines: number;

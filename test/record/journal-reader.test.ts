@@ -174,10 +174,12 @@ describe('a journal of any bytes', () => {
           const changed = Buffer.from(bytes);
           for (const [at, byte] of changes) changed[at] = byte;
           fc.pre(!changed.equals(bytes));
-          const { events: read, integrity } = readBack(journalOf(changed));
+          const path = journalOf(changed);
+          const { events: read, integrity } = readBack(path);
+          expect(integrity.kind).not.toBe('whole');
           // With the last line no longer whole nothing seals what stands after the last seal but one.
-          if (integrity.kind === 'damaged') expect(read).toEqual(events.slice(0, integrity.lines));
-          else expect(integrity.kind).toBe('cut-off');
+          const sealed = checkJournal(path).kind === 'cut-off' ? lastSealIn(read) : integrity.lines;
+          expect(read.slice(0, sealed)).toEqual(events.slice(0, sealed));
         },
       ),
       { numRuns: 300 },
@@ -210,7 +212,7 @@ describe('a journal of any bytes', () => {
         const checked = checkJournal(path);
         const { events: read, integrity } = readBack(path);
         // What stands after the last seal of a journal that was cut off bears no seal yet.
-        const sealed = integrity.kind === 'cut-off' ? lastSealIn(read) : read.length;
+        const sealed = checked.kind === 'cut-off' ? lastSealIn(read) : read.length;
         expect(read.slice(0, sealed)).toEqual(events.slice(0, sealed));
         if (integrity.kind === 'whole') expect(read).toEqual(events);
         expect(integrity.lines).toBeLessThanOrEqual(checked.lines);
