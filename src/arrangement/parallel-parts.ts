@@ -6,18 +6,23 @@ import type { ModuleProfile } from './module-profile.js';
 import { orDiodeDrop, orDiodeFor } from './or-diode.js';
 import type { ParallelBuild } from './parallel-build.js';
 
-/** What is bought for a group: its modules, a ballast for each, and the diodes that it may do without. */
+/**
+ * What is bought for a group: its modules, a ballast for each, and the diodes that it may do without; numbered on
+ * after so many modules of others.
+ */
 export function parallelParts(
   profiles: readonly ModuleProfile[],
   ballast: ParallelBuild['ballast'],
+  after = 0,
 ): readonly Part[] {
-  return [...moduleParts(profiles), ...ballastParts(profiles, ballast), orDiodeParts(profiles)];
+  return [...moduleParts(profiles), ...ballastParts(profiles, ballast, after), orDiodeParts(profiles, after)];
 }
 
 /** A ballast for each, none where none is needed. */
 export function ballastParts(
   profiles: readonly ModuleProfile[],
   ballast: ParallelBuild['ballast'],
+  after = 0,
 ): readonly Part[] {
   if (ballast.kind !== 'resistor') return [];
   const { resistance, tolerance, rating, dissipation, dissipationAtLimit } = ballast;
@@ -25,7 +30,7 @@ export function ballastParts(
   const value = formatExact(resistance, 'resistance');
   return [
     {
-      marks: profiles.map((_, index) => `R${index + 1}`),
+      marks: profiles.map((_, index) => `R${after + index + 1}`),
       what: 'ballast resistor in the plus lead of each module',
       ratings: [
         `${value.value} ${value.unit}`,
@@ -39,11 +44,11 @@ export function ballastParts(
   ];
 }
 
-function orDiodeParts(profiles: readonly ModuleProfile[]): Part {
+function orDiodeParts(profiles: readonly ModuleProfile[], after: number): Part {
   const { rating, heat } = orDiodeFor(profiles);
   const voltage = formatExact(rating.voltage, 'voltage');
   return {
-    marks: profiles.map((_, index) => `D${index + 1}`),
+    marks: profiles.map((_, index) => `D${after + index + 1}`),
     what: 'optional: OR-ing diode (Schottky) in the plus lead of each module',
     ratings: [`at least ${ratedAmperes(rating.current)}`, `${voltage.value} ${voltage.unit} reverse`],
     why: `only where the group must go on when an output fails shorted: costs about ${formatQuantity(orDiodeDrop, 'voltage')} of the bus, and makes up to ${formatQuantity(heat, 'power', { significant: 2 })} of heat on a heat sink`,

@@ -85,8 +85,8 @@ export function selectModules(
     margin: next === undefined ? undefined : marginOf(best, next, wish.tolerance),
     unused: unusedOf(drawer, best),
     circuit: circuitOf(first, wished),
-    parts: standing.kind === 'may-be-built' ? partsOf(first, wished) : [],
-    cautions: cautionsOf(first, wished),
+    parts: standing.kind === 'may-be-built' ? partsOf(best.supplies, wished) : [],
+    cautions: cautionsOf(best.supplies, wished),
   };
 }
 

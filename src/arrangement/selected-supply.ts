@@ -38,24 +38,42 @@ export function circuitOf(supply: Supply, { resistance, tolerance }: Wished): Ci
   };
 }
 
-/** What is bought for a supply: what its groups need and, where they stand upon each other, a diode across each module. */
-export function partsOf(supply: Supply, wished: Wished): readonly Part[] {
+/** What is bought for all supplies: the marks of one go on where those of the one before it end. */
+export function partsOf(supplies: readonly Supply[], wished: Wished): readonly Part[] {
+  return supplies.flatMap((supply, index) =>
+    partsOfOne(supply, wished, supplies.slice(0, index).flatMap(modulesIn).length),
+  );
+}
+
+/** What its groups need and, where they stand upon each other, a diode across each module. */
+function partsOfOne(supply: Supply, wished: Wished, after: number): readonly Part[] {
   const modules = modulesIn(supply);
   const [first, ...others] = supply;
   if (first === undefined) return [];
   if (others.length === 0) {
     return first.modules.length > 1
-      ? parallelParts(first.modules, worstBallast(supply, wished))
+      ? parallelParts(first.modules, worstBallast(supply, wished), after)
       : moduleParts(modules);
   }
   return [
-    ...seriesParts(modules, formDiodesOf(circuitOf(supply, wished).form, modules)),
-    ...ballastParts(modules, worstBallast(supply, wished)),
+    ...seriesParts(modules, formDiodesOf(circuitOf(supply, wished).form, modules), after),
+    ...ballastParts(modules, worstBallast(supply, wished), after),
   ];
 }
 
-/** What whoever builds a supply must know. */
-export function cautionsOf(supply: Supply, wished: Wished): readonly string[] {
+/** What whoever builds them must know: what holds for all once, the rest with the modules that it is of. */
+export function cautionsOf(supplies: readonly Supply[], wished: Wished): readonly string[] {
+  const each = supplies.map((supply) => ({ supply, cautions: cautionsOfOne(supply, wished) }));
+  const ofAll = (caution: string): boolean => each.every(({ cautions }) => cautions.includes(caution));
+  const common = (each[0]?.cautions ?? []).filter(ofAll);
+  const own = each.flatMap(({ supply, cautions }) => {
+    const names = listed(modulesIn(supply).map(({ name }) => name));
+    return cautions.filter((caution) => !ofAll(caution)).map((caution) => `${names}: ${caution}`);
+  });
+  return [...common, ...own];
+}
+
+function cautionsOfOne(supply: Supply, wished: Wished): readonly string[] {
   const ofGroups = supply
     .filter(({ modules }) => modules.length > 1)
     .flatMap(({ modules }) => parallelCautions(modules, worstBallast(supply, wished)));

@@ -40,8 +40,9 @@ export interface Selection {
   /** How many assignments there are. */
   readonly considered: number;
   readonly unused: readonly string[];
-  /** Of one supply of the best; undefined where there is none. */
+  /** Of the first supply of the best, as which the others are wired; undefined where there is none. */
   readonly circuit: Circuit | undefined;
+  /** Of all supplies of the best, in their order; the marks go on from one to the next. */
   readonly parts: readonly Part[];
   readonly cautions: readonly string[];
 }

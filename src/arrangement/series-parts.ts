@@ -6,12 +6,16 @@ import { moduleParts } from './module-parts.js';
 import type { ModuleProfile } from './module-profile.js';
 import type { ReverseDiode } from './series-build.js';
 
-/** What is bought for a string: its modules, and a diode across each, alike ones on one line. */
+/**
+ * What is bought for a string: its modules, and a diode across each, alike ones on one line; numbered on after so
+ * many modules of others.
+ */
 export function seriesParts(
   profiles: readonly ModuleProfile[],
   diodes: readonly ReverseDiode[],
+  after = 0,
 ): readonly Part[] {
-  const marked = diodes.map((diode, index) => ({ mark: `D${index + 1}`, diode }));
+  const marked = diodes.map((diode, index) => ({ mark: `D${after + index + 1}`, diode }));
   const ratings = [...new Set(marked.map(({ diode }) => ratingOf(diode)))];
   return [
     ...moduleParts(profiles),

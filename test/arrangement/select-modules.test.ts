@@ -45,6 +45,41 @@ describe('pairs out of a drawer', () => {
     );
   });
 
+  it('are listed with the parts of every supply and what must be known of it, no mark twice', () => {
+    const uneven = drawer({
+      K1: { openCircuit: 15.3 },
+      K2: { openCircuit: 15.0, earth: 'bonded' },
+      K3: { openCircuit: 15.01, usable: 6.5, dropout: 6.6 },
+      K4: { openCircuit: 15.28 },
+    });
+    const { best, parts, cautions } = select(uneven, { ...pairs, supplies: 2 });
+    expect(groupsOf(best)).toEqual([['K2+K3'], ['K1+K4']]);
+    const wished = { ballast: given, tolerance: wish.tolerance, load: undefined };
+    const each = [
+      ['K2', 'K3'],
+      ['K1', 'K4'],
+    ].map((names) =>
+      buildParallel(
+        names.flatMap((name) => uneven.filter((profile) => profile.name === name)),
+        wished,
+      ),
+    );
+    const [first, second] = each.map((build) => build.parts);
+    expect(parts.slice(0, first?.length)).toEqual(first);
+    const others = parts.slice(first?.length);
+    expect(others.map(({ ratings }) => ratings)).toEqual(second?.map(({ ratings }) => ratings));
+    expect(others.flatMap(({ marks }) => marks)).toEqual(['K1', 'K4', 'R3', 'R4', 'D3', 'D4']);
+    // The heavier diodes are those of the stronger pair.
+    expect(first?.at(-1)?.ratings).not.toEqual(second?.at(-1)?.ratings);
+    const [ofFirst = [], ofSecond = []] = each.map((build) => build.cautions);
+    expect(cautions).toEqual([
+      ...ofFirst.filter((caution) => ofSecond.includes(caution)),
+      ...ofFirst.filter((caution) => !ofSecond.includes(caution)).map((caution) => `K2 and K3: ${caution}`),
+      ...ofSecond.filter((caution) => !ofFirst.includes(caution)).map((caution) => `K1 and K4: ${caution}`),
+    ]);
+    expect(cautions.join('\n')).toMatch(/^K2 and K3: The output of K2 is bonded/m);
+  });
+
   it('are ahead by less than the records tell where those are uncertain', () => {
     const vague = four.map((profile) =>
       madeProfile(profile.name, {

@@ -11,14 +11,14 @@ import { cautionsText, partsText } from './parts-text.js';
 import { bullets, prose, section, sentence, text } from './prose.js';
 import { concernsText, sourcesText } from './records-text.js';
 import { standingText } from './standing-text.js';
-import { firstOnly, inSigns, wished } from './supply-signs.js';
+import { firstDrawn, inSigns, wished } from './supply-signs.js';
 
 /** Which modules of a drawer to put together, for a terminal or a text file. */
 export function selectionAsText(worked: Selection, style: Style): string {
   const selection = printableData(worked);
   const { best, next } = selection;
   const chosen = chosenOf(selection);
-  const only = firstOnly(selection);
+  const only = firstDrawn(selection);
   return text([
     headingText(title(selection), chosen, style),
     answer(selection, style),

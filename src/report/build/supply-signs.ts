@@ -7,11 +7,11 @@ export function inSigns({ groups }: SelectedSupply): string {
   return signs.map((each) => (each.includes('∥') ? `(${each})` : each)).join(' + ');
 }
 
-/** Of several supplies, which one the circuit, parts and cautions are of: another one's parts may have to bear more. */
-export function firstOnly({ best, standing }: Selection): string | undefined {
+/** Of several supplies, which one the circuit is of, and how the parts of all are told apart. */
+export function firstDrawn({ best, standing }: Selection): string | undefined {
   const [first, ...others] = best?.supplies ?? [];
   if (first === undefined || others.length === 0 || standing.kind !== 'may-be-built') return undefined;
-  return `circuit, parts and cautions are those of ${inSigns(first)} only: other modules may ask for other ratings, so have each further supply worked out from the records of its own modules`;
+  return `all are wired alike, and the sheet draws ${inSigns(first)}; the numbers of their parts go on from one supply to the next`;
 }
 
 /** `2 modules side by side`. */

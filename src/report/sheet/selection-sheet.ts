@@ -4,7 +4,7 @@ import { listed } from '../../quantity/listed.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { brief } from '../build/brief.js';
 import { sentence } from '../build/prose.js';
-import { firstOnly, inSigns, wished } from '../build/supply-signs.js';
+import { firstDrawn, inSigns, wished } from '../build/supply-signs.js';
 import { barChart } from '../chart/bar-chart.js';
 import { element, type Markup } from '../page/markup.js';
 import { bullets, section, type Sheet } from '../page/page.js';
@@ -18,7 +18,7 @@ import { concernsSection, modulesSection, sourcesSection } from './records.js';
 /** Which modules of a drawer to put together. */
 export function selectionSheet(build: Selection): Sheet {
   const { best, next, circuit } = build;
-  const only = firstOnly(build);
+  const only = firstDrawn(build);
   return {
     kind: 'Build sheet · a choice out of a drawer',
     title: `${build.wish.supplies === 1 ? 'One supply' : `${build.wish.supplies} supplies`}: ${wished(build.wish)}`,

@@ -58,9 +58,9 @@ describe.each(Object.entries(makers))('the build sheet of %s', (_, make) => {
   });
 });
 
-it('of several supplies it says which one is drawn, and that the others may need other parts', () => {
+it('of several supplies it says which one is drawn, and how the parts of the others are numbered', () => {
   const page = buildPage(madeSelection({ standing: { kind: 'may-be-built' } }), made);
-  expect(page).toMatch(/are those of [^.]* only: other modules may ask for other ratings/);
+  expect(page).toMatch(/All are wired alike, and the sheet draws [^.]*; the numbers of their parts go on/);
 });
 
 it('nothing is called guaranteed of a staged supply that may not be built', () => {
