@@ -78,6 +78,14 @@ describe.skipIf(isMissing)('a build sheet in a browser (needs /usr/bin/chromium)
       expect(await textsInTheWay(page)).toEqual([]);
     });
 
+    it('shows its tables whole on a desk screen', async () => {
+      await page.setViewportSize({ width: 1100, height: 800 });
+      const cut = await page.evaluate<string[]>(
+        "[...document.querySelectorAll('.wide:has(table)')].filter((one) => one.scrollWidth > one.clientWidth).map((one) => one.ariaLabel)",
+      );
+      expect(cut).toEqual([]);
+    });
+
     it('does not scroll sideways at 360 px', async () => {
       await page.setViewportSize({ width: 360, height: 800 });
       const widths = await page.evaluate<number[]>(

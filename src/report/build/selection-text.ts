@@ -11,7 +11,7 @@ import { cautionsText, partsText } from './parts-text.js';
 import { bullets, prose, section, sentence, text } from './prose.js';
 import { concernsText, sourcesText } from './records-text.js';
 import { standingText } from './standing-text.js';
-import { firstDrawn, inSigns, wished } from './supply-signs.js';
+import { chosenOf, firstDrawn, inSigns, wished } from './supply-signs.js';
 
 /** Which modules of a drawer to put together, for a terminal or a text file. */
 export function selectionAsText(worked: Selection, style: Style): string {
@@ -31,13 +31,6 @@ export function selectionAsText(worked: Selection, style: Style): string {
     concernsText(selection, style),
     sourcesText(chosen, style),
   ]);
-}
-
-/** Those of the best; where there is none, all that there are. */
-function chosenOf({ best, modules }: Selection): Selection['modules'] {
-  if (best === undefined) return modules;
-  const names = best.supplies.flatMap(({ groups }) => groups.flatMap((group) => group.modules));
-  return modules.filter(({ name }) => names.includes(name));
 }
 
 function title({ wish }: Selection): string {

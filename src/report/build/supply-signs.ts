@@ -7,6 +7,13 @@ export function inSigns({ groups }: SelectedSupply): string {
   return signs.map((each) => (each.includes('∥') ? `(${each})` : each)).join(' + ');
 }
 
+/** The modules of the best; where there is none, all that there are. */
+export function chosenOf({ best, modules }: Selection): Selection['modules'] {
+  if (best === undefined) return modules;
+  const names = best.supplies.flatMap(({ groups }) => groups.flatMap((group) => group.modules));
+  return modules.filter(({ name }) => names.includes(name));
+}
+
 /** Of several supplies, which one the circuit is of, and how the parts of all are told apart. */
 export function firstDrawn({ best, standing }: Selection): string | undefined {
   const [first, ...others] = best?.supplies ?? [];

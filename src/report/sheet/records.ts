@@ -83,8 +83,8 @@ export function sourcesSection(modules: readonly ModuleProfile[]): Markup | unde
         { heading: 'What', as: 'fixed' },
         { heading: 'Value', as: 'number' },
         { heading: '95 %', as: 'fixed' },
-        { heading: 'Record', as: 'number' },
-        { heading: 'Note', as: 'text' },
+        { heading: 'No.', as: 'number' },
+        { heading: 'Note' },
       ],
       rows.map(({ module, what, value, limits, note, from }) => [
         module.name,

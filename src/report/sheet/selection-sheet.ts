@@ -4,7 +4,7 @@ import { listed } from '../../quantity/listed.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { brief } from '../build/brief.js';
 import { sentence } from '../build/prose.js';
-import { firstDrawn, inSigns, wished } from '../build/supply-signs.js';
+import { chosenOf, firstDrawn, inSigns, wished } from '../build/supply-signs.js';
 import { barChart } from '../chart/bar-chart.js';
 import { element, type Markup } from '../page/markup.js';
 import { bullets, section, type Sheet } from '../page/page.js';
@@ -38,7 +38,7 @@ export function selectionSheet(build: Selection): Sheet {
       cautionsSection(build),
       concernsSection(build.concerns),
       modulesSection(build.modules),
-      sourcesSection(build.modules),
+      sourcesSection(chosenOf(build)),
     ],
   };
 }
