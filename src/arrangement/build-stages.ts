@@ -4,6 +4,7 @@ import { layOut } from './laid-out.js';
 import type { ModuleProfile } from './module-profile.js';
 import type { StagedBuild } from './staged-build.js';
 import { stagesCautions } from './stages-cautions.js';
+import { standingsOf } from './stages-hanging.js';
 import { stagesParts } from './stages-parts.js';
 import { dissipationOf, requireRecords, requireStages } from './stages-sense.js';
 import { stagesStanding } from './stages-standing.js';
@@ -38,10 +39,12 @@ export function buildStages(all: readonly ModuleProfile[], wish: StagesWish): St
       label: label.voltage,
       open: openCircuit.value,
     })),
+    bonded: profiles.flatMap(({ name, earth }) => (earth?.relation === 'bonded' ? [name] : [])),
   };
   const laid = layOut(profiles, wish, switching);
   const switchOvers = switchOversOf(laid, wish, switching);
-  const found = { wish, switching, laid, switchOvers };
+  const standings = standingsOf(profiles, switching, laid);
+  const found = { wish, switching, laid, switchOvers, standings };
   const mostDissipation = dissipationOf(wish.linearStage);
   const staged = { ...found, mostDissipation };
   const guaranteed = guaranteedOver(staged);
@@ -57,7 +60,7 @@ export function buildStages(all: readonly ModuleProfile[], wish: StagesWish): St
     mostDissipation,
     guaranteed,
     map: dissipationMap(staged, guaranteed),
-    parts: standing.kind === 'may-be-built' ? stagesParts(profiles, laid, wish, mostDissipation) : [],
+    parts: standing.kind === 'may-be-built' ? stagesParts(profiles, found, mostDissipation) : [],
     cautions: stagesCautions(found),
   };
 }

@@ -5,6 +5,7 @@ import { type Contact, type Sequence, sequences } from './stages-wish.js';
 import {
   type ContactState,
   feeds,
+  type Netlist,
   netlistOf,
   type Position,
   settledState,
@@ -51,7 +52,7 @@ export function movementBetween(
       'Put an arrangement in between, or name contacts once that are one contact.',
     );
   }
-  const look = lookedAt(switching, settledState(switching.contacts, from), movers);
+  const look = lookedAt(switching, { from, to }, movers);
   const verdicts = sequences.map((sequence) => [sequence, verdictOf(switching, movers, sequence, look)]);
   return {
     moving: movers.map(({ contact }) => contact),
@@ -121,11 +122,27 @@ type Progress = readonly number[];
 interface Look {
   readonly forbidden: (progress: Progress) => boolean;
   readonly feeds: (progress: Progress) => boolean;
-  readonly state: (progress: Progress) => ContactState;
+  readonly netlist: (progress: Progress) => Netlist;
+}
+
+interface Ends {
+  readonly from: readonly string[];
+  readonly to: readonly string[];
+}
+
+/** Bonds to earth that short something; where they do so at an end already, that is told there. */
+function bondsToWatch(switching: Switching, { from, to }: Ends): readonly string[] {
+  const bonded = switching.bonded ?? [];
+  const shorts = [from, to].some((driven) =>
+    isForbidden(netlistOf(switching, settledState(switching.contacts, driven), bonded)),
+  );
+  return shorts ? [] : bonded;
 }
 
 /** The states, each looked at once for all three sequences. */
-function lookedAt(switching: Switching, start: ContactState, movers: readonly Mover[]): Look {
+function lookedAt(switching: Switching, ends: Ends, movers: readonly Mover[]): Look {
+  const start = settledState(switching.contacts, ends.from);
+  const bonded = bondsToWatch(switching, ends);
   const state = (progress: Progress): ContactState => {
     const moved = new Map(start);
     for (const [index, { contact, steps }] of movers.entries()) {
@@ -134,20 +151,21 @@ function lookedAt(switching: Switching, start: ContactState, movers: readonly Mo
     }
     return moved;
   };
+  const netlist = (progress: Progress): Netlist => netlistOf(switching, state(progress), bonded);
   const seen = new Map<string, { readonly forbidden: boolean; readonly feeds: boolean }>();
   const look = (progress: Progress) => {
     const key = progress.join('');
     const before = seen.get(key);
     if (before !== undefined) return before;
-    const netlist = netlistOf(switching, state(progress));
-    const found = { forbidden: isForbidden(netlist), feeds: feeds(netlist) };
+    const circuit = netlist(progress);
+    const found = { forbidden: isForbidden(circuit), feeds: feeds(circuit) };
     seen.set(key, found);
     return found;
   };
   return {
     forbidden: (progress) => look(progress).forbidden,
     feeds: (progress) => look(progress).feeds,
-    state,
+    netlist,
   };
 }
 
@@ -168,7 +186,7 @@ function verdictOf(
   let interrupts = false;
   for (const { progress, order } of reached.values()) {
     if (look.forbidden(progress)) {
-      const connection = forbiddenIn(switching, netlistOf(switching, look.state(progress)));
+      const connection = forbiddenIn(switching, look.netlist(progress));
       if (connection !== undefined) return { kind: 'forbidden', order, connection };
     }
     interrupts ||= !look.feeds(progress);

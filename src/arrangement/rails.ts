@@ -34,7 +34,8 @@ export function railsOf(profiles: readonly Stacked[]): readonly Rail[] {
   });
 }
 
-function verdictOn({ top, isolation }: Place): Rail['verdict'] {
+/** Of what does not lie at the 0 V. */
+export function verdictOn({ top, isolation }: Place): Rail['verdict'] {
   if (isolation === 'unknown') return 'unknown';
   return top.high <= isolation ? 'within' : 'beyond';
 }

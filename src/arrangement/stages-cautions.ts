@@ -5,6 +5,8 @@ import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import { hasStack, type LaidOut } from './laid-out.js';
 import { canBeLookedAt, movementBetween } from './movements.js';
+import { modulesOf } from './build.js';
+import { reachOf } from './stages-hanging.js';
 import { railVoltsAtMost } from './rails.js';
 import { dissipationOf } from './stages-sense.js';
 import type { StagesFound } from './stages-standing.js';
@@ -12,10 +14,11 @@ import type { SwitchOver } from './staged-build.js';
 
 /** What whoever builds a staged supply must know, a sentence or two each; the heaviest first. */
 export function stagesCautions(found: StagesFound): readonly string[] {
-  const { laid, switchOvers } = found;
+  const { laid, switchOvers, standings } = found;
   return [
     'The modules are fed from the mains: their cases stay closed, all are unplugged before anything is wired, and outputs are proved dead with a meter first, as capacitors hold their charge.',
-    ...touchCaution(laid),
+    ...touchCaution(reachOf(laid, standings)),
+    ...hangingCautions(found),
     ...(laid.some(({ found: { circuit } }) => hasStack(circuit.form))
       ? [
           'Earth one point of the supply at most, and that is in-. Whatever is joined to an output earths it as well: a meter or a load with an earthed 0 V may be joined to the whole supply only.',
@@ -46,17 +49,32 @@ function shortCaution({ laid, wish: { linearStage } }: StagesFound): readonly st
   ];
 }
 
-export function highestOf(laid: readonly LaidOut[]): Volts {
+function highestOf(laid: readonly LaidOut[]): Volts {
   return Math.max(...laid.map(({ found }) => found.openVoltage.high));
 }
 
-function touchCaution(laid: readonly LaidOut[]): readonly string[] {
-  const highest = highestOf(laid);
+function touchCaution(highest: Volts): readonly string[] {
   return highest > touchable
     ? [
         `It reaches ${railVoltsAtMost(highest)} before the linear stage, beyond the ${touchable} V DC that are safe to touch (ES1, IEC 62368-1): cover all of it, so that nothing can be reached without a tool.`,
       ]
     : [];
+}
+
+/** Those that no stack shows so high: whoever reads the arrangements would take them for dead. */
+function hangingCautions({ standings, laid }: StagesFound): readonly string[] {
+  const stacked = new Set(
+    laid.flatMap(({ found: { circuit } }) => (hasStack(circuit.form) ? modulesOf(circuit.form) : [])),
+  );
+  return standings.flatMap(({ arrangement, hanging }) => {
+    const alive = hanging.filter(({ module }) => !stacked.has(module));
+    if (alive.length === 0) return [];
+    const where = arrangement === undefined ? 'With no contact driven' : `In ${arrangement}`;
+    const each = alive.map(({ module, top }) => `${module} by up to ${railVoltsAtMost(top.high)}`);
+    return [
+      `${where} modules that feed nothing there are live all the same and stand off in-: ${listed(each)}.`,
+    ];
+  });
 }
 
 /** Relays that lose their supply fall back one by one, over all steps at once, and no sequence holds any more. */

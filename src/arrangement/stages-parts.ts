@@ -11,7 +11,8 @@ import { mostCurrentOf } from './most-current.js';
 import { formDiodesOf } from './reverse-diodes.js';
 import type { ReverseDiode } from './series-build.js';
 import { seriesParts } from './series-parts.js';
-import { highestOf } from './stages-cautions.js';
+import { reachOf } from './stages-hanging.js';
+import type { StagesFound } from './stages-standing.js';
 import type { Contact, LinearStage, StagesWish } from './stages-wish.js';
 
 /** Above what it has to bear. Common practice, no published source. */
@@ -22,12 +23,11 @@ const cabinetAir = 40;
 /** What is bought for a staged supply. */
 export function stagesParts(
   profiles: readonly ModuleProfile[],
-  laid: readonly LaidOut[],
-  wish: StagesWish,
+  { laid, wish, standings }: Pick<StagesFound, 'laid' | 'wish' | 'standings'>,
   mostDissipation: Watts,
 ): readonly Part[] {
   const most = {
-    voltage: highestOf(laid),
+    voltage: reachOf(laid, standings),
     current: Math.max(...laid.map(({ fullCurrent }) => fullCurrent)),
   };
   const drawn = [

@@ -3,18 +3,21 @@ import type { Volts } from '../quantity/quantity.js';
 import type { Concern, Estimate, Form, Standing } from './build.js';
 import { hasStack, type LaidOut } from './laid-out.js';
 import type { ModuleProfile } from './module-profile.js';
+import { verdictOn } from './rails.js';
 import type { Rail } from './series-build.js';
 import { seriesStanding } from './series-standing.js';
+import type { Standings } from './stages-hanging.js';
 
 /**
  * What the rules for a string say of the modules that are ever stacked, each at the highest place that any
- * arrangement gives it. Those that lie at the 0 V of the supply are each a lowest one.
+ * arrangement gives it, or the contacts at rest, be it that it feeds nothing there. Those that lie at the 0 V of the supply are each a lowest one.
  */
 export function stackStanding(
   profiles: readonly ModuleProfile[],
   laid: readonly LaidOut[],
+  standings: readonly Standings[],
 ): { readonly standings: readonly Standing[]; readonly concerns: readonly Concern[] } {
-  const rails = highestRails(profiles, laid);
+  const rails = highestRails(profiles, laid, standings);
   const placed = rails.flatMap((rail) => {
     const profile = profiles.find(({ name }) => name === rail.module);
     return profile === undefined ? [] : [{ profile, rail }];
@@ -35,13 +38,19 @@ export function stackStanding(
 }
 
 /** Of each module that is ever stacked, where it stands highest; the lowest first. */
-export function highestRails(profiles: readonly ModuleProfile[], laid: readonly LaidOut[]): readonly Rail[] {
+function highestRails(
+  profiles: readonly ModuleProfile[],
+  laid: readonly LaidOut[],
+  standings: readonly Standings[],
+): readonly Rail[] {
+  const stacked = laid.flatMap(({ found: { circuit } }) =>
+    hasStack(circuit.form) ? railsIn(circuit.form, nothing, profiles) : [],
+  );
+  const hung = standings.flatMap(({ rails, hanging }) => (hanging.length > 0 ? rails : []));
   const highest = new Map<string, Rail>();
-  for (const { found } of laid) {
-    if (!hasStack(found.circuit.form)) continue;
-    for (const rail of railsIn(found.circuit.form, nothing, profiles)) {
-      if (rail.top.high > (highest.get(rail.module)?.top.high ?? 0)) highest.set(rail.module, rail);
-    }
+  for (const rail of [...stacked, ...hung]) {
+    const before = highest.get(rail.module);
+    if (rail.top.high > (before?.top.high ?? 0)) highest.set(rail.module, rail);
   }
   return [...highest.values()].sort((one, other) => one.float.value - other.float.value);
 }
@@ -75,14 +84,7 @@ function railOf(module: string, float: Estimate, profiles: readonly ModuleProfil
   const own = heightOf({ kind: 'module', name: module }, profiles);
   const top = { value: float.value + own.value, low: float.low + own.low, high: float.high + own.high };
   const isolation = profile.outputIsolation;
-  const verdict =
-    float.high === 0
-      ? 'not-needed'
-      : isolation === 'unknown'
-        ? 'unknown'
-        : top.high <= isolation
-          ? 'within'
-          : 'beyond';
+  const verdict = float.high === 0 ? 'not-needed' : verdictOn({ top, isolation });
   return [{ module, float, top, isolation, verdict }];
 }
 

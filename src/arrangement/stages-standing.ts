@@ -5,6 +5,7 @@ import { highestOutput } from './guaranteed.js';
 import type { LaidOut } from './laid-out.js';
 import type { ModuleProfile } from './module-profile.js';
 import type { Movement, SwitchOver } from './staged-build.js';
+import type { Standings } from './stages-hanging.js';
 import { stackStanding } from './stages-stacks.js';
 import { type Sequence, sequences, type StagesWish } from './stages-wish.js';
 import { standingOf } from './standing-of.js';
@@ -15,6 +16,7 @@ export interface StagesFound {
   readonly switching: Switching;
   readonly laid: readonly LaidOut[];
   readonly switchOvers: readonly SwitchOver[];
+  readonly standings: readonly Standings[];
 }
 
 /**
@@ -26,7 +28,7 @@ export function stagesStanding(
   profiles: readonly ModuleProfile[],
   found: StagesFound,
 ): { readonly standing: Standing; readonly concerns: readonly Concern[] } {
-  const stacks = stackStanding(profiles, found.laid);
+  const stacks = stackStanding(profiles, found.laid, found.standings);
   const concerns = [...new Set([...profiles.flatMap((profile) => profile.concerns), ...stacks.concerns])];
   const said = (kind: Standing['kind']): readonly string[] =>
     stacks.standings.flatMap((standing) =>

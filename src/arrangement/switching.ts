@@ -15,6 +15,8 @@ export interface Source {
 /** What stays the same whatever the contacts do. */
 export type Switching = Pick<StagesWish, 'contacts' | 'wires' | 'diodes'> & {
   readonly sources: readonly Source[];
+  /** Modules whose 0 V is bonded to earth inside, as in- is taken to be. */
+  readonly bonded?: readonly string[];
 };
 
 /** Something between two nodes that drives or passes a current, from the one to the other only. */
@@ -42,7 +44,7 @@ export interface Netlist {
 
 export interface NamedJoint {
   readonly joins: Joint;
-  /** Undefined for a wire. */
+  /** Undefined for a wire; a bond to earth by what it is. */
   readonly contact: string | undefined;
 }
 
@@ -78,8 +80,15 @@ function settled(contact: Contact, isDriven: boolean): Position {
   }
 }
 
-/** The circuit of one state. */
-export function netlistOf(switching: Switching, state: ContactState): Netlist {
+/**
+ * The circuit of one state.
+ * @param bonded modules whose 0 V earth joins to in-.
+ */
+export function netlistOf(
+  switching: Switching,
+  state: ContactState,
+  bonded: readonly string[] = [],
+): Netlist {
   const joints: readonly NamedJoint[] = [
     ...switching.wires.map((joins): NamedJoint => ({ joins, contact: undefined })),
     ...switching.contacts.flatMap((contact) =>
@@ -88,6 +97,10 @@ export function netlistOf(switching: Switching, state: ContactState): Netlist {
         contact: contact.name,
       })),
     ),
+    ...bonded.map((name): NamedJoint => ({
+      joins: [`${name}-`, inputMinus],
+      contact: `the bond of ${name} to earth`,
+    })),
   ];
   const numberOf = merged(joints);
   const [minus, plus] = [numberOf(inputMinus), numberOf(inputPlus)];

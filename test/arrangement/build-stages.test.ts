@@ -360,6 +360,97 @@ it('an output beyond what the arrangements give is refused, and how far they go 
   expect(reason).toMatch(/^Above 34\.3 V nothing is guaranteed, and the output is to reach 40\.0 V/);
 });
 
+/** K2 alone or W1 alone, each from in- on, by contacts that put K2 upon W1 meanwhile or at rest. */
+function eitherBench(changed: Partial<StagesWish> = {}): StagesWish {
+  return valveBench({
+    wires: [['W1-', 'in-']],
+    contacts: [changes('S1', ['W2-', 'in-', 'W1+']), makes('S2', 'W2+', 'in+'), breaks('S3', 'W1+', 'in+')],
+    arrangements: [
+      { name: 'one', form: w1, driven: [] },
+      { name: 'other', form: w2, driven: ['S2', 'S3'] },
+    ],
+    sequence: 'break-before-make',
+    output: { from: 0, to: 9 },
+    ...changed,
+  });
+}
+const hanging: Partial<StagesWish> = {
+  arrangements: [
+    { name: 'one', form: w1, driven: ['S1'] },
+    { name: 'other', form: w2, driven: ['S2', 'S3'] },
+  ],
+};
+const other = { openCircuit: 15.1, label: { voltage: 15, current: 4 } };
+
+describe('modules that feed nothing and hang upon another', () => {
+  it('may stand where they are free of earth and what they withstand is known', () => {
+    expect(because(eitherBench(hanging), bricks({ W2: other }))).toEqual([]);
+  });
+
+  it('are refused where they are bonded to earth, which shorts what they hang upon', () => {
+    const bonded = bricks({ W2: { ...other, earth: 'bonded' } });
+    expect(because(eitherBench(), bonded)).toEqual([]);
+    expect(because(eitherBench(hanging), bonded)).toEqual([
+      expect.stringMatching(/^The output of W2 is bonded to earth inside, and would have to stand 12\.1/),
+    ]);
+  });
+
+  it('are refused where they are bonded and hang so at rest only', () => {
+    const bonded = bricks({ W2: { ...other, earth: 'bonded' } });
+    const atRest = eitherBench({
+      contacts: [changes('S1', ['W2-', 'W1+', 'in-']), makes('S2', 'W2+', 'in+'), breaks('S3', 'W1+', 'in+')],
+      arrangements: [
+        { name: 'one', form: w1, driven: ['S1'] },
+        { name: 'other', form: w2, driven: ['S1', 'S2', 'S3'] },
+      ],
+    });
+    expect(because(atRest, bonded)).toEqual([expect.stringContaining('W2 is bonded to earth inside')]);
+  });
+
+  it("can't be decided on where their earth was never measured, nor are beyond 60 V with nobody knowing what they withstand", () => {
+    expect(because(eitherBench(hanging), bricks({ W2: { ...other, earth: undefined } }))).toEqual([
+      expect.stringContaining('run isolation on W2'),
+    ]);
+    const high = {
+      openCircuit: 36.1,
+      label: { voltage: 36, current: 2 },
+      outputIsolation: 'unknown' as const,
+    };
+    expect(because(eitherBench(hanging), bricks({ W1: high, W2: { ...high, openCircuit: 36.2 } }))).toEqual([
+      expect.stringContaining('beyond the 60 V DC that are safe to touch'),
+    ]);
+  });
+
+  it('count for what contacts and diodes are rated for, and for what must not be touched', () => {
+    const high = { openCircuit: 36.1, label: { voltage: 36, current: 2 }, outputIsolation: 500 };
+    const build = buildStages(bricks({ W1: high, W2: { ...high, openCircuit: 36.2 } }), eitherBench(hanging));
+    expect(build.standing.kind).toBe('may-be-built');
+    expect(build.cautions).toContainEqual(expect.stringMatching(/^It reaches 72\.[3-9].* beyond the 60 V/));
+    expect(build.parts.find(({ marks }) => marks.includes('S2'))?.ratings[0]).toBe('breaks 73 V DC');
+  });
+});
+
+it('a bond to earth that shorts a module only while contacts move is refused with the order that does it', () => {
+  // Should T close first, W2 is for a moment upon W1; the diodes make nothing worse of that than more volts.
+  const wish = valveBench({
+    wires: [['W1-', 'in-']],
+    contacts: [changes('S1', ['W2-', 'mid', 'in-']), makes('T', 'mid', 'W1+')],
+    diodes: [diode('X1', 'W1+', 'in+'), diode('X2', 'W2+', 'in+')],
+    arrangements: [
+      { name: 'one', form: w1, driven: [] },
+      { name: 'both', form: group(w1, w2), driven: ['S1', 'T'] },
+    ],
+    output: { from: 0, to: 9 },
+  });
+  expect(because(wish)).toEqual([]);
+  expect(because(wish, bricks({ W2: { earth: 'bonded' } }))).toEqual([
+    expect.stringMatching(
+      /: T closes, and the output of W1 would be shorted, through S1, T and the bond of W2 to earth\. Driven break before make no order does that\.$/,
+    ),
+    expect.stringContaining('From both to one'),
+  ]);
+});
+
 describe('silly wishes are refused', () => {
   const stage = (changed: Partial<LinearStage>): Partial<StagesWish> => ({
     linearStage: { ...valveBench().linearStage, ...changed },
