@@ -106,10 +106,10 @@ function formMade({ name, form, driven }: WishedArrangement, switching: Switchin
   }
 }
 
-type Ballast = StagesWish['ballast'];
+export type Ballast = StagesWish['ballast'];
 
 /** What a module may give: what it is recommended for, or what its ballast bears. */
-function within(
+export function within(
   module: ModuleProfile,
   ballast: Ballast,
 ): { readonly current: Amperes; readonly by: LaidOut['limitedBy'] } {

@@ -6,7 +6,7 @@ import type { Volts } from '../quantity/quantity.js';
 import { hasStack, type LaidOut } from './laid-out.js';
 import { canBeLookedAt, movementBetween } from './movements.js';
 import { modulesOf } from './build.js';
-import { reachOf } from './stages-hanging.js';
+import { inputAtRest, reachOf } from './stages-hanging.js';
 import { railVoltsAtMost } from './rails.js';
 import { dissipationOf } from './stages-sense.js';
 import type { StagesFound } from './stages-standing.js';
@@ -24,6 +24,7 @@ export function stagesCautions(found: StagesFound): readonly string[] {
           'Earth one point of the supply at most, and that is in-. Whatever is joined to an output earths it as well: a meter or a load with an earthed 0 V may be joined to the whole supply only.',
         ]
       : []),
+    ...restCaution(found),
     ...fallBackCautions(found),
     ...leapCautions(found),
     ...interruptCautions(found),
@@ -69,13 +70,29 @@ function hangingCautions({ standings, laid }: StagesFound): readonly string[] {
   return standings.flatMap(({ arrangement, hanging }) => {
     const alive = hanging.filter(({ module }) => !stacked.has(module));
     if (alive.length === 0) return [];
-    const where = arrangement === undefined ? 'With no contact driven' : `In ${arrangement}`;
+    const where =
+      arrangement === undefined
+        ? 'With no contact driven modules'
+        : `In ${arrangement} modules that feed nothing there`;
     const each = alive.map(({ module, top }) => `${module} by up to ${railVoltsAtMost(top.high)}`);
-    return [
-      `${where} modules that feed nothing there are live all the same and stand off in-: ${listed(each)}.`,
-    ];
+    return [`${where} are live all the same and stand off in-: ${listed(each)}.`];
   });
 }
+
+/** Its output does not follow: what was right for the arrangement before may be too hot for that at rest. */
+function restCaution({ laid, standings, wish: { linearStage } }: StagesFound): readonly string[] {
+  const atRest = inputAtRest(laid, standings);
+  const [lowest] = laid;
+  const heat = atRest * linearStage.current;
+  const most = dissipationOf(linearStage);
+  if (lowest === undefined || atRest <= lowest.found.openVoltage.high + arithmetic || heat <= most) return [];
+  const watts = (power: number): string => formatQuantity(power, 'power', { significant: 3 });
+  return [
+    `Contacts that lose their supply put up to ${volts(atRest)} on the linear stage, whatever its output then is: at a low output and its ${amps(linearStage.current)} it makes up to ${watts(heat)} of heat, where it may make ${watts(most)}. Rest had better be the lowest arrangement, or the load goes off with the contacts.`,
+  ];
+}
+
+const arithmetic = 1e-9;
 
 /** Relays that lose their supply fall back one by one, over all steps at once, and no sequence holds any more. */
 function fallBackCautions({ laid, switching }: StagesFound): readonly string[] {

@@ -16,8 +16,8 @@ export interface Standings {
   readonly hanging: readonly Rail[];
   /** From the lowest to the highest node. */
   readonly span: Volts;
-  /** Of in+; undefined where nothing lifts it. */
-  readonly input: Estimate | undefined;
+  /** Of in+ at its highest; undefined where nothing lifts it. */
+  readonly input: Volts | undefined;
 }
 
 interface State {
@@ -53,7 +53,7 @@ export function standingsOf(
       rails,
       hanging: rails.filter(({ module, float }) => float.high > 0 && !part.includes(module)),
       span: Math.max(...all.map(({ high }) => high)) - Math.min(...all.map(({ low }) => low)),
-      input: heights.get(netlist.plus),
+      input: heights.get(netlist.plus)?.high,
     };
   });
 }
@@ -120,6 +120,12 @@ function railsIn(
     const verdict = float.high === 0 ? 'not-needed' : verdictOn({ top, isolation });
     return [{ module: profile.name, float, top, isolation, verdict }];
   });
+}
+
+/** What in+ stands at with no contact driven, at its highest; 0 where nothing lifts it. */
+export function inputAtRest(laid: readonly LaidOut[], standings: readonly Standings[]): Volts {
+  const resting = laid.find(({ driven }) => driven.length === 0)?.found.name;
+  return Math.max(0, standings.find(({ arrangement }) => arrangement === resting)?.input ?? 0);
 }
 
 /** The highest voltage between any two points ahead of the linear stage. */

@@ -5,7 +5,8 @@ import { highestOutput } from './guaranteed.js';
 import type { LaidOut } from './laid-out.js';
 import type { ModuleProfile } from './module-profile.js';
 import type { Movement, SwitchOver } from './staged-build.js';
-import type { Standings } from './stages-hanging.js';
+import { groupStanding } from './stages-groups.js';
+import { inputAtRest, type Standings } from './stages-hanging.js';
 import { stackStanding } from './stages-stacks.js';
 import { type Sequence, sequences, type StagesWish } from './stages-wish.js';
 import { standingOf } from './standing-of.js';
@@ -28,8 +29,11 @@ export function stagesStanding(
   profiles: readonly ModuleProfile[],
   found: StagesFound,
 ): { readonly standing: Standing; readonly concerns: readonly Concern[] } {
+  const groups = groupStanding(profiles, found);
   const stacks = stackStanding(profiles, found.laid, found.standings);
-  const concerns = [...new Set([...profiles.flatMap((profile) => profile.concerns), ...stacks.concerns])];
+  const concerns = [
+    ...new Set([...profiles.flatMap((profile) => profile.concerns), ...stacks.concerns, ...groups.concerns]),
+  ];
   const said = (kind: Standing['kind']): readonly string[] =>
     stacks.standings.flatMap((standing) =>
       standing.kind === kind && standing.kind !== 'may-be-built' ? standing.because : [],
@@ -38,10 +42,11 @@ export function stagesStanding(
     refusals: [
       ...movementRefusals(found),
       ...restRefusals(found),
+      ...restInputRefusals(found),
       ...rangeRefusals(found),
       ...said('must-not-be-built'),
     ],
-    doubts: said('cannot-tell'),
+    doubts: [...said('cannot-tell'), ...groups.doubts],
     concerns,
   });
   return {
@@ -87,6 +92,19 @@ function restRefusals({ switching }: StagesFound): readonly string[] {
         `With no contact driven, as when the relays lose their supply, ${atRest.sentence}. Wire it so that nothing is joined wrongly at rest.`,
       ];
 }
+
+/** More than the file tells of: nobody will have chosen the linear stage for it. */
+function restInputRefusals({ laid, standings }: StagesFound): readonly string[] {
+  const highest = Math.max(...laid.map(({ found }) => found.openVoltage.high));
+  const atRest = inputAtRest(laid, standings);
+  return atRest <= highest + arithmetic
+    ? []
+    : [
+        `With no contact driven, as when the relays lose their supply, the linear stage would stand at up to ${volts(atRest)}, and no arrangement goes beyond ${volts(highest)}. Wire it so that less is joined at rest, or name that as an arrangement, so that it is reckoned with.`,
+      ];
+}
+
+const arithmetic = 1e-9;
 
 function rangeRefusals({ laid, wish }: StagesFound): readonly string[] {
   const highest = highestOutput(laid, wish.linearStage);

@@ -430,6 +430,72 @@ describe('modules that feed nothing and hang upon another', () => {
   });
 });
 
+describe('contacts that lose their supply', () => {
+  it('may not put more on the linear stage than any arrangement does', () => {
+    const wish = valveBench({
+      wires: [
+        ['W1-', 'in-'],
+        ['W2+', 'in+'],
+      ],
+      contacts: [changes('S1', ['W2-', 'W1+', 'in-']), makes('S2', 'W1+', 'in+')],
+      arrangements: [{ name: 'pair', form: group(w1, w2), driven: ['S1', 'S2'] }],
+      output: { from: 0, to: 9 },
+    });
+    expect(because(wish)).toEqual([
+      expect.stringMatching(
+        /^With no contact driven, .* the linear stage would stand at up to 24\.2.* V, and no arrangement goes beyond 12\.1/,
+      ),
+    ]);
+  });
+
+  it('are warned of where they put the highest arrangement on it whatever the output is', () => {
+    const wish = valveBench({
+      wires: [
+        ['W1-', 'in-'],
+        ['W1+', 'W2-'],
+      ],
+      contacts: [changes('S1', ['in+', 'W2+', 'W1+'])],
+      arrangements: [
+        { name: 'one', form: w1, driven: ['S1'] },
+        { name: 'two', form: stack(w1, w2), driven: [] },
+      ],
+      output: { from: 0, to: 20 },
+    });
+    const warned = expect.stringMatching(
+      /^Contacts that lose their supply put up to 24\.2 V on the linear stage, whatever its output then is: .* 121 W of heat, where it may make 25\.0 W/,
+    ) as string;
+    expect(because(wish)).toEqual([]);
+    expect(buildStages(bricks(), wish).cautions).toContainEqual(warned);
+    expect(buildStages(bricks(), valveBench()).cautions).not.toContainEqual(
+      expect.stringContaining('Contacts that lose their supply put'),
+    );
+  });
+});
+
+describe('a group in an arrangement', () => {
+  const grouped = valveBench({
+    arrangements: [{ name: 'pair', form: group(w1, w2), driven: [] }],
+    output: { from: 0, to: 9 },
+  });
+
+  it("can't be decided on where it gives less than its best module alone", () => {
+    const unlike = bricks({ W2: { openCircuit: 12.5, recommended: 0.5 } });
+    expect(because(grouped, unlike)).toEqual([
+      expect.stringMatching(/^In pair W1 and W2 side by side are good for .*, less than W1 alone, 2\.50 A/),
+    ]);
+  });
+
+  it('has a module named that adds hardly anything', () => {
+    const unlike = bricks({ W2: { openCircuit: 12.5 } });
+    const { standing, concerns } = buildStages(unlike, grouped);
+    expect(standing.kind).toBe('may-be-built');
+    expect(concerns).toContainEqual(
+      expect.objectContaining({ kind: 'of-little-use', module: 'W1', weight: 'weakens' }),
+    );
+    expect(buildStages(bricks(), grouped).concerns).toEqual([]);
+  });
+});
+
 it('a bond to earth that shorts a module only while contacts move is refused with the order that does it', () => {
   // Should T close first, W2 is for a moment upon W1; the diodes make nothing worse of that than more volts.
   const wish = valveBench({

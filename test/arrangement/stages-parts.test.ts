@@ -42,7 +42,7 @@ describe('the parts of a staged supply', () => {
 
   it('have at each module the mark that every arrangement is drawn with, and what its diode must bear', () => {
     const uneven = bricks({
-      W1: { recommended: 6, usable: 8, dropout: 9 },
+      W1: { recommended: 4, usable: 8, dropout: 9 },
       W3: { recommended: 1.2, usable: 1.5, dropout: 1.6 },
     }).reverse();
     const { arrangements, parts } = buildStages(uneven, valveBench());
