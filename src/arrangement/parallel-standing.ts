@@ -81,7 +81,7 @@ function farApart(profiles: readonly ModuleProfile[]): readonly string[] {
   ];
 }
 
-function recommendedForNothing({ name, recommended }: ModuleProfile): readonly string[] {
+export function recommendedForNothing({ name, recommended }: ModuleProfile): readonly string[] {
   return recommended.current > 0
     ? []
     : [`${name} is recommended for nothing by its records: ${recommended.why}.`];

@@ -5,6 +5,7 @@ import { highestOutput } from './guaranteed.js';
 import type { LaidOut } from './laid-out.js';
 import type { ModuleProfile } from './module-profile.js';
 import type { Movement, SwitchOver } from './staged-build.js';
+import { recommendedForNothing } from './parallel-standing.js';
 import { groupStanding } from './stages-groups.js';
 import { inputAtRest, type Standings } from './stages-hanging.js';
 import { stackStanding } from './stages-stacks.js';
@@ -44,6 +45,7 @@ export function stagesStanding(
       ...restRefusals(found),
       ...restInputRefusals(found),
       ...rangeRefusals(found),
+      ...profiles.flatMap(recommendedForNothing),
       ...said('must-not-be-built'),
     ],
     doubts: [...said('cannot-tell'), ...groups.doubts],
@@ -108,7 +110,8 @@ const arithmetic = 1e-9;
 
 function rangeRefusals({ laid, wish }: StagesFound): readonly string[] {
   const highest = highestOutput(laid, wish.linearStage);
-  if (highest >= wish.output.to) return [];
+  // Just there nothing is left to flow.
+  if (highest > wish.output.to + arithmetic) return [];
   const served =
     highest <= wish.output.from
       ? 'At no output of the range is anything guaranteed'

@@ -430,6 +430,24 @@ describe('modules that feed nothing and hang upon another', () => {
   });
 });
 
+it('a module that is recommended for nothing is refused where nothing is stacked too', () => {
+  const wish = valveBench({
+    arrangements: [{ name: 'pair', form: group(w1, w2), driven: [] }],
+    output: { from: 0, to: 9 },
+  });
+  expect(because(wish, bricks({ W1: { recommended: 0 }, W2: { recommended: 0 } }))).toEqual([
+    expect.stringMatching(/^W1 is recommended for nothing by its records: /),
+    expect.stringMatching(/^W2 is recommended for nothing by its records: /),
+  ]);
+});
+
+it('an output at which nothing at all is left to feed is refused', () => {
+  const { arrangements } = buildStages(bricks(), valveBench());
+  const top = (arrangements.at(-1)?.openVoltage.low ?? 0) - 2;
+  expect(because(valveBench({ output: { from: 0, to: top } })).join(' ')).toContain('nothing is guaranteed');
+  expect(because(valveBench({ output: { from: 0, to: top - 0.1 } }))).toEqual([]);
+});
+
 describe('contacts that lose their supply', () => {
   it('may not put more on the linear stage than any arrangement does', () => {
     const wish = valveBench({
