@@ -60,8 +60,8 @@ function labelsOf({ elements }: Netlist): readonly Volts[] {
   return elements.flatMap((element) => (element.kind === 'module' ? [element.source.label] : []));
 }
 
-/** How high each node is lifted above in- by what can lift it. */
-function potentialsOf(netlist: Netlist): readonly Volts[] {
+/** How high, at least, each node is lifted above in- by what can lift it. */
+export function potentialsOf(netlist: Netlist): readonly Volts[] {
   const arcs = arcsOf(netlist);
   const lifted = new Array<Volts>(netlist.nodes).fill(Number.NEGATIVE_INFINITY);
   lifted[netlist.minus] = 0;

@@ -1,5 +1,7 @@
 import { UnfitWishError } from './arrangement-error.js';
 import { forbiddenIn, isForbidden } from './forbidden-connection.js';
+import type { Volts } from '../quantity/quantity.js';
+import { potentialsOf } from './made-form.js';
 import type { Movement, MovementVerdict } from './staged-build.js';
 import { type Contact, type Sequence, sequences } from './stages-wish.js';
 import {
@@ -53,10 +55,15 @@ export function movementBetween(
     );
   }
   const look = lookedAt(switching, { from, to }, movers);
-  const verdicts = sequences.map((sequence) => [sequence, verdictOf(switching, movers, sequence, look)]);
+  const told = sequences.map((sequence) => ({ sequence, ...verdictOf(switching, movers, sequence, look) }));
   return {
     moving: movers.map(({ contact }) => contact),
-    bySequence: Object.fromEntries(verdicts) as Movement['bySequence'],
+    bySequence: Object.fromEntries(
+      told.map(({ sequence, verdict }) => [sequence, verdict]),
+    ) as Movement['bySequence'],
+    lifts: Object.fromEntries(told.map(({ sequence, lift }) => [sequence, lift])) as NonNullable<
+      Movement['lifts']
+    >,
   };
 }
 
@@ -122,6 +129,8 @@ type Progress = readonly number[];
 interface Look {
   readonly forbidden: (progress: Progress) => boolean;
   readonly feeds: (progress: Progress) => boolean;
+  /** Of in+. */
+  readonly lift: (progress: Progress) => Volts;
   readonly netlist: (progress: Progress) => Netlist;
 }
 
@@ -152,19 +161,26 @@ function lookedAt(switching: Switching, ends: Ends, movers: readonly Mover[]): L
     return moved;
   };
   const netlist = (progress: Progress): Netlist => netlistOf(switching, state(progress), bonded);
-  const seen = new Map<string, { readonly forbidden: boolean; readonly feeds: boolean }>();
+  const seen = new Map<
+    string,
+    { readonly forbidden: boolean; readonly feeds: boolean; readonly lift: Volts }
+  >();
   const look = (progress: Progress) => {
     const key = progress.join('');
     const before = seen.get(key);
     if (before !== undefined) return before;
     const circuit = netlist(progress);
-    const found = { forbidden: isForbidden(circuit), feeds: feeds(circuit) };
+    const forbidden = isForbidden(circuit);
+    // Round a forbidden loop there is no end of lifting.
+    const lift = forbidden ? 0 : Math.max(0, potentialsOf(circuit)[circuit.plus] ?? 0);
+    const found = { forbidden, feeds: feeds(circuit), lift };
     seen.set(key, found);
     return found;
   };
   return {
     forbidden: (progress) => look(progress).forbidden,
     feeds: (progress) => look(progress).feeds,
+    lift: (progress) => look(progress).lift,
     netlist,
   };
 }
@@ -180,16 +196,18 @@ function verdictOf(
   movers: readonly Mover[],
   sequence: Sequence,
   look: Look,
-): MovementVerdict {
+): { readonly verdict: MovementVerdict; readonly lift: Volts } {
   const start: Reached = { progress: movers.map(() => 0), order: [] };
   const reached = new Map<string, Reached>([[start.progress.join(''), start]]);
   let interrupts = false;
+  let lift: Volts = 0;
   for (const { progress, order } of reached.values()) {
     if (look.forbidden(progress)) {
       const connection = forbiddenIn(switching, look.netlist(progress));
-      if (connection !== undefined) return { kind: 'forbidden', order, connection };
+      if (connection !== undefined) return { verdict: { kind: 'forbidden', order, connection }, lift };
     }
     interrupts ||= !look.feeds(progress);
+    lift = Math.max(lift, look.lift(progress));
     for (const [index, { steps }] of movers.entries()) {
       const step = steps[progress[index] ?? 0];
       if (step === undefined || !mayStep(movers, progress, index, step, sequence)) continue;
@@ -198,7 +216,7 @@ function verdictOf(
       if (!reached.has(key)) reached.set(key, { progress: next, order: [...order, step.words] });
     }
   }
-  return { kind: 'clear', states: reached.size, interrupts };
+  return { verdict: { kind: 'clear', states: reached.size, interrupts }, lift };
 }
 
 function mayStep(

@@ -54,6 +54,8 @@ export interface Movement {
   readonly moving: readonly string[];
   /** By how the contacts are driven; that of the wish decides. */
   readonly bySequence: Readonly<Record<Sequence, MovementVerdict>>;
+  /** What the input of the linear stage stands at, at least, in the highest of the states that are passed. */
+  readonly lifts?: Readonly<Record<Sequence, Volts>>;
 }
 
 export type MovementVerdict =

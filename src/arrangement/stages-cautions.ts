@@ -27,6 +27,7 @@ export function stagesCautions(found: StagesFound): readonly string[] {
     ...restCaution(found),
     ...fallBackCautions(found),
     ...leapCautions(found),
+    ...liftCautions(found),
     ...interruptCautions(found),
     ...unusedCautions(found),
     'Contacts break a direct current, which does not go out by itself: take their rating for DC at the voltage named, switch with little or no load where that can be had, and expect bounce. What is said here of the order of contacts holds for contacts that work: one that is welded is not among the orders.',
@@ -132,6 +133,19 @@ function leapCautions({ laid, switching, wish }: StagesFound): readonly string[]
     : [
         `${told.join(' ')} Go through all arrangements in between, and wait at each until its contacts have come to rest.`,
       ];
+}
+
+/** For a moment, but a capacitor or a transistor needs no longer. */
+function liftCautions({ laid, switchOvers, wish }: StagesFound): readonly string[] {
+  const highest = Math.max(...laid.map(({ found }) => found.openVoltage.high));
+  return switchOvers.flatMap(({ lower, upper, goingUp, comingDown }) => {
+    const lift = Math.max(...[goingUp, comingDown].map(({ lifts }) => lifts?.[wish.sequence] ?? 0));
+    return lift <= highest + arithmetic
+      ? []
+      : [
+          `While the contacts move between ${lower} and ${upper} the input of the linear stage may stand for a moment at ${volts(lift)} or more, beyond the ${volts(highest)} of any arrangement: all that is joined to it, and the contacts, must bear that. Better wire it so that no order does it.`,
+        ];
+  });
 }
 
 function interruptCautions({ switchOvers, wish }: StagesFound): readonly string[] {

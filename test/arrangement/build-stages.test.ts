@@ -527,6 +527,12 @@ it('a bond to earth that shorts a module only while contacts move is refused wit
     output: { from: 0, to: 9 },
   });
   expect(because(wish)).toEqual([]);
+  expect(buildStages(bricks(), wish).cautions).toContainEqual(
+    expect.stringMatching(/^While the contacts move between one and both .* at 2[23]\.\d V or more/),
+  );
+  expect(buildStages(bricks(), { ...wish, sequence: 'break-before-make' }).cautions).not.toContainEqual(
+    expect.stringContaining('While the contacts move between one and both'),
+  );
   expect(because(wish, bricks({ W2: { earth: 'bonded' } }))).toEqual([
     expect.stringMatching(
       /: T closes, and the output of W1 would be shorted, through S1, T and the bond of W2 to earth\. Driven break before make no order does that\.$/,
