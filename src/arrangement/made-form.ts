@@ -65,10 +65,15 @@ export function potentialsOf(netlist: Netlist): readonly Volts[] {
   const arcs = arcsOf(netlist);
   const lifted = new Array<Volts>(netlist.nodes).fill(Number.NEGATIVE_INFINITY);
   lifted[netlist.minus] = 0;
-  for (let round = 0; round < netlist.nodes; round += 1) {
+  let isRaised = true;
+  for (let round = 0; isRaised && round < netlist.nodes; round += 1) {
+    isRaised = false;
     for (const { element, from, to, gain } of arcs) {
       if (element.kind === 'linear-stage') continue;
-      lifted[to] = Math.max(lifted[to] ?? 0, (lifted[from] ?? 0) + gain);
+      const sum = (lifted[from] ?? 0) + gain;
+      if (sum <= (lifted[to] ?? 0)) continue;
+      lifted[to] = sum;
+      isRaised = true;
     }
   }
   return lifted;

@@ -19,7 +19,8 @@ export function stagesCautions(found: StagesFound): readonly string[] {
     'The modules are fed from the mains: their cases stay closed, all are unplugged before anything is wired, and outputs are proved dead with a meter first, as capacitors hold their charge.',
     ...touchCaution(reachOf(laid, standings)),
     ...hangingCautions(found),
-    ...(laid.some(({ found: { circuit } }) => hasStack(circuit.form))
+    ...(laid.some(({ found: { circuit } }) => hasStack(circuit.form)) ||
+    standings.some(({ hanging }) => hanging.length > 0)
       ? [
           'Earth one point of the supply at most, and that is in-. Whatever is joined to an output earths it as well: a meter or a load with an earthed 0 V may be joined to the whole supply only.',
         ]

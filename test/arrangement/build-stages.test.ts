@@ -385,6 +385,13 @@ const other = { openCircuit: 15.1, label: { voltage: 15, current: 4 } };
 describe('modules that feed nothing and hang upon another', () => {
   it('may stand where they are free of earth and what they withstand is known', () => {
     expect(because(eitherBench(hanging), bricks({ W2: other }))).toEqual([]);
+    const { cautions } = buildStages(bricks({ W2: other }), eitherBench(hanging));
+    expect(cautions).toContainEqual(expect.stringMatching(/^Earth one point of the supply at most/));
+    expect(cautions).toContainEqual(
+      expect.stringMatching(
+        /^In one modules that feed nothing there are live all the same .* W2 by up to 27\.2/,
+      ),
+    );
   });
 
   it('are refused where they are bonded to earth, which shorts what they hang upon', () => {
