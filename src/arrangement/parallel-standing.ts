@@ -16,8 +16,8 @@ const alikeLabels: Ratio = 0.01;
 /** The most that ballasts may cost of the lowest open-circuit voltage, as where one is chosen. */
 const mostCost: Ratio = 0.1;
 
-/** Of what a module is recommended for alone: one that adds less is wasted. Chosen, no published source. */
-const littleUse: Ratio = 0.1;
+/** Of what a part of a group is good for alone: one that adds less is wasted. Chosen, no published source. */
+export const littleUse: Ratio = 0.1;
 
 interface Found {
   readonly ballast: ParallelBuild['ballast'];

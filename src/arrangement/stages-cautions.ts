@@ -5,7 +5,7 @@ import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import { hasStack, type LaidOut } from './laid-out.js';
 import { canBeLookedAt, movementBetween } from './movements.js';
-import { modulesOf } from './build.js';
+import { type Form, modulesOf } from './build.js';
 import { inputAtRest, reachOf } from './stages-hanging.js';
 import { railVoltsAtMost } from './rails.js';
 import { dissipationOf } from './stages-sense.js';
@@ -25,6 +25,7 @@ export function stagesCautions(found: StagesFound): readonly string[] {
           'Earth one point of the supply at most, and that is in-. Whatever is joined to an output earths it as well: a meter or a load with an earthed 0 V may be joined to the whole supply only.',
         ]
       : []),
+    ...sharingDiodesCaution(found),
     ...restCaution(found),
     ...fallBackCautions(found),
     ...leapCautions(found),
@@ -50,6 +51,21 @@ function shortCaution({ laid, wish: { linearStage } }: StagesFound): readonly st
   return [
     `Nothing here keeps the load from asking more than is guaranteed: a short at the output would put up to ${volts(across)} across the linear stage, and at its ${amps(linearStage.current)} make ${watts(heat)} of heat, where it may make ${watts(most)}. It must limit itself by its heat, or be switched off.`,
   ];
+}
+
+/**
+ * A file names one forward voltage. That one diode may drop 0.2 V less than another of its kind, and less the warmer
+ * it gets, is common practice, no published source.
+ */
+function sharingDiodesCaution({ laid, wish: { diodes } }: StagesFound): readonly string[] {
+  if (diodes.length === 0 || !laid.some(({ found }) => hasGroup(found.circuit.form))) return [];
+  return [
+    'Where modules side by side feed through diodes, those are taken to drop alike, and what is guaranteed rests on that. One that drops 0.2 V less lets its module carry more, and drops less still as it gets warm: take diodes of one kind, mount them on one heat sink, and measure the current of each module at full load before the supply is left alone.',
+  ];
+}
+
+function hasGroup(form: Form): boolean {
+  return form.kind === 'group' || (form.kind === 'stack' && form.of.some(hasGroup));
 }
 
 function highestOf(laid: readonly LaidOut[]): Volts {

@@ -1,14 +1,12 @@
 import { listed } from '../quantity/listed.js';
-import type { Amperes, Ratio } from '../quantity/quantity.js';
+import type { Amperes } from '../quantity/quantity.js';
 import { roundedDown } from '../quantity/rounded-down.js';
 import { modulesOf, type Concern, type Form } from './build.js';
 import { type LaidOut, within } from './laid-out.js';
 import type { ModuleProfile } from './module-profile.js';
+import { littleUse } from './parallel-standing.js';
 import type { StagesWish } from './stages-wish.js';
 import { worstOf } from './worst-form.js';
-
-/** Of what a part is good for alone: one that adds less is wasted. Chosen, no published source. */
-const littleUse: Ratio = 0.1;
 
 /**
  * Whether the groups of the arrangements do what groups are for, by the worst case: one that gives less than

@@ -213,10 +213,13 @@ describe('what is guaranteed', () => {
       arrangements: [{ name: 'pair', form: group(w1, w2), driven: [] }],
       output: { from: 0, to: 9 },
     });
-    const { arrangements, parts } = buildStages(bricks(), behind);
+    const { cautions, arrangements, parts } = buildStages(bricks(), behind);
     expect(arrangements[0]?.openVoltage.value).toBeCloseTo(11.6, 9);
     expect(arrangements[0]?.openVoltage.high).toBeGreaterThan(12.1);
     expect(arrangements[0]?.circuit.orDiodes).toBe(true);
+    expect(cautions).toContainEqual(
+      expect.stringMatching(/^Where modules side by side feed through diodes, those are taken to drop alike/),
+    );
     expect(parts.find(({ marks }) => marks.includes('E1'))?.ratings).toContain('at most 500 mV forward');
   });
 });
