@@ -72,7 +72,11 @@ export default tseslint.config(
     rules: {
       'no-restricted-imports': [
         'error',
-        { paths: [{ name: 'fast-check', message: 'test/property.ts chooses the cases, the same in every run.' }] },
+        {
+          paths: [
+            { name: 'fast-check', message: 'test/property.ts chooses the cases, the same in every run.' },
+          ],
+        },
       ],
     },
   },
