@@ -171,6 +171,11 @@ function everyModuleBehind(form: FormBehindDrops): boolean {
   return form.kind !== 'module' && form.of.every(everyModuleBehind);
 }
 
+/** The highest that any arrangement may stand at with no load. */
+export function highestOpen(laid: readonly LaidOut[]): Volts {
+  return Math.max(...laid.map(({ found }) => found.openVoltage.high));
+}
+
 export function hasStack(form: Form): boolean {
   return form.kind === 'stack' || (form.kind === 'group' && form.of.some(hasStack));
 }

@@ -3,7 +3,7 @@ import { touchable } from '../circuit/touchable.js';
 import { listed } from '../quantity/listed.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
-import { hasStack, type LaidOut } from './laid-out.js';
+import { hasStack, highestOpen } from './laid-out.js';
 import { canBeLookedAt, movementBetween } from './movements.js';
 import { type Form, modulesOf } from './build.js';
 import { inputAtRest, reachOf } from './stages-hanging.js';
@@ -43,7 +43,7 @@ export function stagesCautions(found: StagesFound): readonly string[] {
 
 /** Nobody keeps an output from asking more than is guaranteed. */
 function shortCaution({ laid, wish: { linearStage } }: StagesFound): readonly string[] {
-  const across = highestOf(laid);
+  const across = highestOpen(laid);
   const heat = across * linearStage.current;
   const most = dissipationOf(linearStage);
   if (heat <= most) return [];
@@ -66,10 +66,6 @@ function sharingDiodesCaution({ laid, wish: { diodes } }: StagesFound): readonly
 
 function hasGroup(form: Form): boolean {
   return form.kind === 'group' || (form.kind === 'stack' && form.of.some(hasGroup));
-}
-
-function highestOf(laid: readonly LaidOut[]): Volts {
-  return Math.max(...laid.map(({ found }) => found.openVoltage.high));
 }
 
 function touchCaution(highest: Volts): readonly string[] {
@@ -154,7 +150,7 @@ function leapCautions({ laid, switching, wish }: StagesFound): readonly string[]
 
 /** For a moment, but a capacitor or a transistor needs no longer. */
 function liftCautions({ laid, switchOvers, wish }: StagesFound): readonly string[] {
-  const highest = Math.max(...laid.map(({ found }) => found.openVoltage.high));
+  const highest = highestOpen(laid);
   return switchOvers.flatMap(({ lower, upper, goingUp, comingDown }) => {
     const lift = Math.max(...[goingUp, comingDown].map(({ lifts }) => lifts?.[wish.sequence] ?? 0));
     return lift <= highest + arithmetic

@@ -1,6 +1,7 @@
 import type { Volts } from '../quantity/quantity.js';
 import { modulesOf, type Estimate } from './build.js';
-import type { LaidOut } from './laid-out.js';
+import { highestOpen, type LaidOut } from './laid-out.js';
+import { noHeight, openVoltageOf, raisedBy } from './height.js';
 import type { ModuleProfile } from './module-profile.js';
 import type { Rail } from './series-build.js';
 import { verdictOn } from './rails.js';
@@ -63,18 +64,18 @@ export function standingsOf(
  * taken to take nothing, which lifts what is behind it the most.
  */
 function heightsIn(netlist: Netlist, profiles: readonly ModuleProfile[]): ReadonlyMap<number, Estimate> {
-  const heights = new Map<number, Estimate>([[netlist.minus, { value: 0, low: 0, high: 0 }]]);
+  const heights = new Map<number, Estimate>([[netlist.minus, noHeight]]);
   const tie = (kind: 'module' | 'diode'): boolean => {
     for (const element of netlist.elements) {
       if (element.kind !== kind) continue;
       const [from, to] = [heights.get(element.from), heights.get(element.to)];
-      const own = element.kind === 'module' ? openOf(element.source.name, profiles) : nothing;
+      const own = element.kind === 'module' ? openVoltageOf(element.source.name, profiles) : noHeight;
       if (from !== undefined && to === undefined) {
-        heights.set(element.to, plus(from, own));
+        heights.set(element.to, raisedBy(from, own));
         return true;
       }
       if (kind === 'module' && to !== undefined && from === undefined) {
-        heights.set(element.from, plus(to, mirrored(own)));
+        heights.set(element.from, raisedBy(to, mirrored(own)));
         return true;
       }
     }
@@ -83,19 +84,6 @@ function heightsIn(netlist: Netlist, profiles: readonly ModuleProfile[]): Readon
   // What a module fixes goes before what a diode may only lift.
   while (tie('module') || tie('diode'));
   return heights;
-}
-
-const nothing: Estimate = { value: 0, low: 0, high: 0 };
-
-function openOf(module: string, profiles: readonly ModuleProfile[]): Estimate {
-  const taken = profiles.find(({ name }) => name === module)?.openCircuit;
-  return taken === undefined
-    ? nothing
-    : { value: taken.value, low: taken.interval[0], high: taken.interval[1] };
-}
-
-function plus(one: Estimate, other: Estimate): Estimate {
-  return { value: one.value + other.value, low: one.low + other.low, high: one.high + other.high };
 }
 
 function mirrored({ value, low, high }: Estimate): Estimate {
@@ -130,5 +118,5 @@ export function inputAtRest(laid: readonly LaidOut[], standings: readonly Standi
 
 /** The highest voltage between any two points ahead of the linear stage. */
 export function reachOf(laid: readonly LaidOut[], standings: readonly Standings[]): Volts {
-  return Math.max(...laid.map(({ found }) => found.openVoltage.high), ...standings.map(({ span }) => span));
+  return Math.max(highestOpen(laid), ...standings.map(({ span }) => span));
 }

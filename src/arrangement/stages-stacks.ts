@@ -1,6 +1,7 @@
 import { railVoltages } from '../circuit/rail-voltages.js';
 import type { Volts } from '../quantity/quantity.js';
 import type { Concern, Estimate, Form, Standing } from './build.js';
+import { noHeight, openVoltageOf, raisedBy } from './height.js';
 import { hasStack, type LaidOut } from './laid-out.js';
 import type { ModuleProfile } from './module-profile.js';
 import { verdictOn } from './rails.js';
@@ -10,7 +11,8 @@ import type { Standings } from './stages-hanging.js';
 
 /**
  * What the rules for a string say of the modules that are ever stacked, each at the highest place that any
- * arrangement gives it, or the contacts at rest, be it that it feeds nothing there. Those that lie at the 0 V of the supply are each a lowest one.
+ * arrangement gives it, or the contacts at rest, be it that it feeds nothing there. Those that lie at the 0 V of
+ * the supply are each a lowest one.
  */
 export function stackStanding(
   profiles: readonly ModuleProfile[],
@@ -44,7 +46,7 @@ function highestRails(
   standings: readonly Standings[],
 ): readonly Rail[] {
   const stacked = laid.flatMap(({ found: { circuit } }) =>
-    hasStack(circuit.form) ? railsIn(circuit.form, nothing, profiles) : [],
+    hasStack(circuit.form) ? railsIn(circuit.form, noHeight, profiles) : [],
   );
   const hung = standings.flatMap(({ rails, hanging }) => (hanging.length > 0 ? rails : []));
   const highest = new Map<string, Rail>();
@@ -54,8 +56,6 @@ function highestRails(
   }
   return [...highest.values()].sort((one, other) => one.float.value - other.float.value);
 }
-
-const nothing: Estimate = { value: 0, low: 0, high: 0 };
 
 /** With no load, ballasts take nothing. */
 function railsIn(form: Form, below: Estimate, profiles: readonly ModuleProfile[]): readonly Rail[] {
@@ -68,11 +68,7 @@ function railsIn(form: Form, below: Estimate, profiles: readonly ModuleProfile[]
   return form.of.flatMap((part, index) =>
     railsIn(
       part,
-      {
-        value: below.value + (values[index] ?? 0),
-        low: below.low + (lows[index] ?? 0),
-        high: below.high + (highs[index] ?? 0),
-      },
+      raisedBy(below, { value: values[index] ?? 0, low: lows[index] ?? 0, high: highs[index] ?? 0 }),
       profiles,
     ),
   );
@@ -81,8 +77,8 @@ function railsIn(form: Form, below: Estimate, profiles: readonly ModuleProfile[]
 function railOf(module: string, float: Estimate, profiles: readonly ModuleProfile[]): readonly Rail[] {
   const profile = profiles.find(({ name }) => name === module);
   if (profile === undefined) return [];
-  const own = heightOf({ kind: 'module', name: module }, profiles);
-  const top = { value: float.value + own.value, low: float.low + own.low, high: float.high + own.high };
+  const own = openVoltageOf(module, profiles);
+  const top = raisedBy(float, own);
   const isolation = profile.outputIsolation;
   const verdict = float.high === 0 ? 'not-needed' : verdictOn({ top, isolation });
   return [{ module, float, top, isolation, verdict }];
@@ -90,12 +86,7 @@ function railOf(module: string, float: Estimate, profiles: readonly ModuleProfil
 
 /** With no load a group stands where its highest does. */
 function heightOf(form: Form, profiles: readonly ModuleProfile[]): Estimate {
-  if (form.kind === 'module') {
-    const taken = profiles.find(({ name }) => name === form.name)?.openCircuit;
-    return taken === undefined
-      ? nothing
-      : { value: taken.value, low: taken.interval[0], high: taken.interval[1] };
-  }
+  if (form.kind === 'module') return openVoltageOf(form.name, profiles);
   const join = (which: 'value' | 'low' | 'high'): Volts => {
     const heights = form.of.map((part) => heightOf(part, profiles)[which]);
     return form.kind === 'group' ? Math.max(...heights) : heights.reduce((sum, each) => sum + each, 0);

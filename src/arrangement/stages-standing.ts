@@ -2,7 +2,7 @@ import { volts } from '../analysis/in-words.js';
 import type { Concern, Standing } from './build.js';
 import { forbiddenIn } from './forbidden-connection.js';
 import { highestOutput } from './guaranteed.js';
-import type { LaidOut } from './laid-out.js';
+import { highestOpen, type LaidOut } from './laid-out.js';
 import type { ModuleProfile } from './module-profile.js';
 import type { Movement, SwitchOver } from './staged-build.js';
 import { recommendedForNothing } from './parallel-standing.js';
@@ -97,7 +97,7 @@ function restRefusals({ switching }: StagesFound): readonly string[] {
 
 /** More than the file tells of: nobody will have chosen the linear stage for it. */
 function restInputRefusals({ laid, standings }: StagesFound): readonly string[] {
-  const highest = Math.max(...laid.map(({ found }) => found.openVoltage.high));
+  const highest = highestOpen(laid);
   const atRest = inputAtRest(laid, standings);
   return atRest <= highest + arithmetic
     ? []
