@@ -21,6 +21,7 @@ export const mayImport = {
   judgement: ['errors', 'quantity', 'statistics', 'circuit', 'record', 'analysis'],
   arrangement: ['errors', 'quantity', 'statistics', 'circuit', 'record', 'analysis'],
   report: ['errors', 'quantity', 'record', 'analysis', 'judgement', 'arrangement'],
+  view: ['errors', 'clock', 'quantity', 'record', 'steps', 'report'],
 };
 /** Rooms that compute only: no ports, files, clocks or processes. */
 export const pure = ['quantity', 'statistics', 'circuit', 'analysis', 'judgement', 'arrangement'];

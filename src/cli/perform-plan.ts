@@ -97,12 +97,11 @@ async function performWatched(
     const { folder, journal } = await beginRecord(loaded, world, bench, options.runs);
     try {
       options.recorded?.(folder);
-      early.forEach((event) => {
-        journal.append(event);
-      });
       append = (event) => {
         journal.append(event);
+        options.watch.recorded(event);
       };
+      early.forEach(append);
       if (loaded.resumed !== undefined) {
         instrumentsInWords(loaded.resumed.run, bench.instruments).forEach(notice);
       }

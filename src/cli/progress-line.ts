@@ -47,6 +47,10 @@ export class ProgressLine implements RunWatcher {
     this.#stream.write(this.#text(step, progress).slice(0, width - 1));
   }
 
+  recorded(): void {
+    // Its steps and readings come by the other ways.
+  }
+
   noticed(text: string): void {
     this.clear();
     this.#stream.write(`${fitted(printable(text), this.#stream.columns, { indent: '  ' })}\n`);

@@ -33,6 +33,8 @@ export interface Performance {
 export interface RunWatcher {
   stepBegan(step: number, kind: string, summary: string): void;
   progress(step: number, progress: Progress): void;
+  /** What the journal now holds. */
+  recorded(event: JournalEvent): void;
   /** Something that whoever stands at the bench should know, and not only for the moment. */
   noticed(text: string): void;
 }
@@ -91,6 +93,7 @@ function watched({ journal, watch }: Performance): Performance['journal'] {
     append(event) {
       if (event.event === 'notice') watch.noticed(event.text);
       journal.append(event);
+      watch.recorded(event);
     },
   };
 }

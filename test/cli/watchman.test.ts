@@ -91,7 +91,12 @@ describe('a watchman that can not be had', () => {
         operator: simulatedOperator(world.simulation),
         signal: new AbortController().signal,
         hurry: new AbortController().signal,
-        watch: { stepBegan: () => undefined, progress: () => undefined, noticed: () => undefined },
+        watch: {
+          stepBegan: () => undefined,
+          progress: () => undefined,
+          recorded: () => undefined,
+          noticed: () => undefined,
+        },
       },
     );
     expect(performed.ending).toMatchObject({ how: 'stopped', error: { code: 'NO_WATCHMAN' } });

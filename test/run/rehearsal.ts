@@ -117,6 +117,7 @@ export async function rehearse(change: RehearsalChange): Promise<Rehearsal> {
     watch: {
       stepBegan: (step, kind, summary) => watched.push(`${step} ${kind}: ${summary}`),
       progress: () => undefined,
+      recorded: () => undefined,
       noticed: (text) => noticed.push(text),
     },
   });

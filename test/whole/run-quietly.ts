@@ -14,6 +14,7 @@ import { stepKinds } from '../../src/steps/index.js';
 export const nobodyWatches: RunWatcher = {
   stepBegan: () => undefined,
   progress: () => undefined,
+  recorded: () => undefined,
   noticed: () => undefined,
 };
 

@@ -1,0 +1,162 @@
+import type { Dimension, Seconds } from '../quantity/quantity.js';
+import type { Acknowledgement, Phase, PointOutcome, Interrupted, SetPoint } from '../record/journal-event.js';
+
+/**
+ * What a live view shows, and how each message changes it. The server and the page hold the same state by the
+ * same rule, so that a page that comes late, or again, sees what every other sees. Values are in V, A, °C and s;
+ * times are seconds since the run began. Nothing here grows with the length of the run beyond the bounds below.
+ */
+export interface ViewState {
+  readonly run: ViewedRun;
+  /** Counted from 1; 0 before the first. */
+  readonly step: number;
+  readonly elapsed: Seconds;
+  readonly remaining: Seconds;
+  readonly figures: Figures;
+  /** The load's input by what was last read back; undefined while nothing was. */
+  readonly input: 'on' | 'off' | undefined;
+  readonly points: readonly ViewedPoint[];
+  readonly cautions: readonly ViewedCaution[];
+  /** What the person is asked now. */
+  readonly question: Question | undefined;
+  readonly notices: readonly ViewedNotice[];
+  /** A wish to stop was heard. */
+  readonly stopping: boolean;
+  readonly ended: ViewedEnd | undefined;
+}
+
+export interface ViewedRun {
+  readonly title: string;
+  readonly procedure: string;
+  /** `K1`, or `K1+K2`. */
+  readonly module: string;
+  readonly rated: { readonly voltage: number; readonly current: number };
+  readonly bench: string;
+  readonly simulated: boolean;
+  /** ISO 8601, UTC. */
+  readonly began: string;
+  readonly steps: readonly {
+    readonly kind: string;
+    readonly summary: string;
+    readonly duration: Seconds;
+  }[];
+}
+
+export interface Figures {
+  readonly setCurrent?: number;
+  /** Not a number where the instrument had none: null, as JSON knows no other. */
+  readonly voltage?: number | null;
+  readonly current?: number | null;
+  readonly temperature?: number | null;
+  readonly note?: string;
+}
+
+/** One point, its readings averaged. */
+export interface ViewedPoint {
+  readonly step: number;
+  readonly phase: Phase;
+  readonly set: SetPoint;
+  readonly t: Seconds;
+  readonly voltage: number | null;
+  readonly current: number | null;
+  readonly temperature: number | null;
+  readonly outcome: PointOutcome | Interrupted;
+}
+
+export interface ViewedCaution {
+  readonly name: string;
+  readonly text: string;
+  /** Undefined while it waits. */
+  readonly by: Acknowledgement | undefined;
+}
+
+export interface Question {
+  /** Another number for each; an answer names the question that it is to. */
+  readonly id: number;
+  readonly heading: string;
+  readonly text: string;
+  /** `yes`: a caution or the wiring, to be acknowledged; `done`: an act; else what is to be typed. */
+  readonly answer: 'yes' | 'done' | 'text' | Dimension;
+}
+
+export interface ViewedNotice {
+  readonly t: Seconds;
+  readonly text: string;
+}
+
+export interface ViewedEnd {
+  readonly how: 'completed' | 'stopped' | 'failed';
+  readonly reason: string | null;
+  /** What it came to, the answer first; empty where nothing could be told. */
+  readonly answer: readonly string[];
+  readonly outcome: 'conforms' | 'does-not-conform' | 'undecided' | 'not-judged';
+  /** Whether load and source are off, in words; and what to do by hand where that could not be confirmed. */
+  readonly safety: readonly { readonly confirmed: boolean; readonly text: string }[];
+  /** The record's folder. */
+  readonly record: string;
+}
+
+/** One change; what the stream of events carries, each as one JSON object. */
+export type ViewMessage =
+  /** First on every connection. */
+  | { readonly kind: 'everything'; readonly state: ViewState }
+  | { readonly kind: 'step'; readonly step: number; readonly elapsed: Seconds; readonly remaining: Seconds }
+  | {
+      readonly kind: 'figures';
+      readonly figures: Figures;
+      readonly elapsed: Seconds;
+      readonly remaining: Seconds;
+    }
+  | { readonly kind: 'input'; readonly input: 'on' | 'off' }
+  | { readonly kind: 'point'; readonly point: ViewedPoint }
+  | { readonly kind: 'caution'; readonly caution: ViewedCaution }
+  /** Without one: it was answered, here or elsewhere. */
+  | { readonly kind: 'question'; readonly question?: Question }
+  | { readonly kind: 'notice'; readonly notice: ViewedNotice }
+  | { readonly kind: 'stopping' }
+  | { readonly kind: 'ended'; readonly ended: ViewedEnd }
+  /** Every second, so that silence means that the runner is lost. */
+  | { readonly kind: 'beat' };
+
+export const mostPoints = 600;
+export const mostNotices = 60;
+
+export function applied(state: ViewState, message: ViewMessage): ViewState {
+  switch (message.kind) {
+    case 'everything':
+      return message.state;
+    case 'step': {
+      const { step, elapsed, remaining } = message;
+      return { ...state, step, elapsed, remaining, figures: {} };
+    }
+    case 'figures': {
+      const { figures, elapsed, remaining } = message;
+      return { ...state, figures, elapsed, remaining };
+    }
+    case 'input':
+      return { ...state, input: message.input };
+    case 'point':
+      return { ...state, points: bounded([...state.points, message.point]) };
+    case 'caution': {
+      const others = state.cautions.filter(({ name }) => name !== message.caution.name);
+      return { ...state, cautions: [...others, message.caution] };
+    }
+    case 'question':
+      return { ...state, question: message.question };
+    case 'notice':
+      return { ...state, notices: [...state.notices, message.notice].slice(-mostNotices) };
+    case 'stopping':
+      return { ...state, stopping: true };
+    case 'ended':
+      return { ...state, ended: message.ended, question: undefined };
+    case 'beat':
+      return state;
+  }
+}
+
+/** Of more than can be told apart on a screen every other of the older half is left out; what did not hold stays. */
+function bounded(points: readonly ViewedPoint[]): readonly ViewedPoint[] {
+  if (points.length <= mostPoints) return points;
+  const half = points.length / 2;
+  return points.filter((point, index) => index >= half || index % 2 === 0 || point.outcome === 'dropped');
+}
