@@ -17,11 +17,11 @@ export interface ShownAs {
   readonly json?: boolean;
 }
 
-/** Looks where the sheet is to go. @throws SheetNotKeptError */
+/** Looks where the sheet is to go. @throws PageNotKeptError */
 export async function checkShown({ sheet }: ShownAs): Promise<void> {
   if (sheet === undefined) return;
-  const { checkSheet } = await import('./sheet-written.js');
-  checkSheet(sheet);
+  const { checkPage } = await import('./page-written.js');
+  checkPage(sheet, 'build sheet');
 }
 
 /** Says what was worked out, and keeps its sheet; the exit status says whether it may be built. */
@@ -32,14 +32,15 @@ export async function showBuild(build: AnyBuild, wanted: ShownAs, streams: Strea
       : buildAsText(build, styleFor(streams.stdout, streams.environment)),
   );
   if (wanted.sheet !== undefined) {
-    const [{ buildPage }, { writeSheet }] = await Promise.all([
+    const [{ buildPage }, { writePage }] = await Promise.all([
       import('../report/page/build-page.js'),
-      import('./sheet-written.js'),
+      import('./page-written.js'),
     ]);
     const { name, version } = packageFacts();
-    await writeSheet(
+    await writePage(
       wanted.sheet,
       buildPage(build, { program: `${name} ${version}`, date: realClock.wall() }),
+      'build sheet',
     );
     streams.stderr.write(`Build sheet: ${printable(wanted.sheet)}\n`);
   }

@@ -7,7 +7,7 @@ import { type Made, pageText, type Sheet } from './page.js';
 
 /** The build sheet: whatever was worked out of records, as one HTML file that needs no other. */
 export function buildPage(build: AnyBuild, made: Made): string {
-  return pageText({ ...sheetOf(build), made });
+  return pageText({ ...sheetOf(build), made, pageKind: 'build sheet' });
 }
 
 function sheetOf(build: AnyBuild): Sheet {

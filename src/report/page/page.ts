@@ -9,9 +9,12 @@ export interface Made {
   readonly date: Date;
 }
 
+/** What sorts of page there are; each is written over its own kind only. */
+export type PageKind = 'build sheet' | 'report' | 'comparison';
+
 /** What is to be read: what it is, its answer, then one section after the other. */
 export interface Sheet {
-  /** What sort of page it is, a few words. */
+  /** Above the title: what sort of page it is, a few words. */
   readonly kind: string;
   readonly title: string;
   /** Below the title and before all sections: what the reader came for. */
@@ -21,16 +24,19 @@ export interface Sheet {
 
 export interface Page extends Sheet {
   readonly made: Made;
+  readonly pageKind: PageKind;
 }
 
 // No scripts, pictures, fonts, frames, forms: whatever got into the page could neither run nor send.
 const policy = "default-src 'none'; style-src 'unsafe-inline'; base-uri 'none'; form-action 'none'";
 
 /** By which a page of ours is known among other files, before it is written over. */
-export const pageMark = '<meta name="generator" content="railproof build sheet">';
+export function pageMark(kind: PageKind): string {
+  return `<meta name="generator" content="railproof ${kind}">`;
+}
 
 /** One file that needs no other: it opens from a stick, reads on a narrow screen, and prints on A4. */
-export function pageText({ kind, title, answer, sections, made }: Page): string {
+export function pageText({ kind, title, answer, sections, made, pageKind }: Page): string {
   const body = together(
     element('a', { class: 'skip', href: '#answer' }, 'To the answer'),
     element('header', {}, element('p', { class: 'kind' }, kind), element('h1', {}, title)),
@@ -53,7 +59,7 @@ export function pageText({ kind, title, answer, sections, made }: Page): string 
     `<meta http-equiv="Content-Security-Policy" content="${policy}">`,
     '<meta name="viewport" content="width=device-width, initial-scale=1">',
     '<meta name="referrer" content="no-referrer">',
-    pageMark,
+    pageMark(pageKind),
     element('title', {}, `${title} · railproof`).toString(),
     `<style>${css}</style>`,
     '</head>',
