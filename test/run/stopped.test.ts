@@ -1,5 +1,5 @@
 import { expect, it } from 'vitest';
-import { cautionTexts } from '../../src/run/cautions.js';
+import { cautionTexts } from '../../src/record/caution-texts.js';
 import { cautions } from '../../src/files/procedure.js';
 import { OperatorAbsentError } from '../../src/run/stopped.js';
 
