@@ -16,7 +16,7 @@ import { statusOfOutcome } from './exit-status.js';
 import { loadPlan, type LoadedPlan } from './load-plan.js';
 import { performPlan, type PerformOptions, type PlanPerformed } from './perform-plan.js';
 import { planAsJson, planAsText } from './plan-shown.js';
-import { ProgressLine } from './progress-line.js';
+import { runProgress } from './progress/run-progress.js';
 import { recordedOperator } from './recorded-operator.js';
 import { resumeHint } from './resume-hint.js';
 import { loadResumed } from './resume-plan.js';
@@ -73,7 +73,7 @@ async function playPlain(
   { world, operator, runs, stop, streams }: Stage,
   recorded?: PerformOptions['recorded'],
 ): Promise<PlanPerformed> {
-  const watch = new ProgressLine(streams.stderr, loaded.plan, world.clock);
+  const watch = await runProgress(streams, loaded.plan, world.clock, loaded.resumed?.from.steps);
   const { signal, hurry } = stop;
   try {
     return await performPlan(loaded, world, {
@@ -81,7 +81,7 @@ async function playPlain(
       ...(recorded && { recorded }),
     });
   } finally {
-    watch.clear();
+    watch.end();
   }
 }
 

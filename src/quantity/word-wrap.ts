@@ -1,8 +1,11 @@
-/** A text in lines no longer than the width, broken between words; a longer word keeps a line of its own. */
-export function wordWrap(text: string, width: number): string {
+/**
+ * A text in lines no longer than the width, broken between words; a longer word keeps a line of its own. What goes on
+ * from a line begins with `hang`.
+ */
+export function wordWrap(text: string, width: number, hang = ''): string {
   return text
     .split('\n')
-    .map((line) => wrapLine(line, width))
+    .map((line) => wrapLine(line, width, hang))
     .join('\n');
 }
 
@@ -13,23 +16,27 @@ export function wordWrap(text: string, width: number): string {
 export function fitted(
   text: string,
   columns: number | undefined,
-  { widest = Infinity, indent = '' } = {},
+  { widest = Infinity, indent = '', hang = '' } = {},
 ): string {
   const width = columns === undefined || columns === 0 ? Infinity : Math.min(columns, widest);
-  return wordWrap(text, width - indent.length).replace(/^/gm, indent);
+  return wordWrap(text, width - indent.length, hang).replace(/^/gm, indent);
 }
 
-function wrapLine(line: string, width: number): string {
+/** An indented line goes on as far in as it began. */
+function wrapLine(line: string, width: number, hang: string): string {
+  const lead = /^ */.exec(line)?.[0] ?? '';
   const lines: string[] = [];
-  let current = '';
-  for (const word of line.split(' ')) {
-    const longer = current === '' ? word : `${current} ${word}`;
-    if (longer.length > width && current !== '') {
+  let current = lead;
+  let isEmpty = true;
+  for (const word of line.slice(lead.length).split(' ')) {
+    const longer = isEmpty ? current + word : `${current} ${word}`;
+    if (longer.length > width && !isEmpty) {
       lines.push(current);
-      current = word;
+      current = lead + hang + word;
     } else {
       current = longer;
     }
+    isEmpty = false;
   }
   return [...lines, current].join('\n');
 }

@@ -19,6 +19,12 @@ describe('text for a terminal', () => {
     expect(fitted('the load was found again', 16, { indent: '  ' })).toBe('  the load was\n  found again');
   });
 
+  it('goes on as far in as it began, and further where it is to hang', () => {
+    expect(wordWrap('  the load was found again', 16)).toBe('  the load was\n  found again');
+    expect(wordWrap('step 2: the load was found', 16, '  ')).toBe('step 2: the load\n  was found');
+    expect(fitted('  1. wire the load', 12, { hang: '   ' })).toBe('  1. wire\n     the\n     load');
+  });
+
   it.each([undefined, 0])('keeps its lines where there are %s columns', (columns) => {
     expect(fitted('one long line\nand another', columns, { indent: '  ' })).toBe(
       '  one long line\n  and another',
