@@ -6,6 +6,7 @@ import { printable } from '../quantity/printable.js';
 import { checkDialogueOf } from './check-dialogue.js';
 import { errorText } from './error-text.js';
 import { recordsOf } from './stage-records.js';
+import { say } from './say.js';
 import type { Streams } from './streams.js';
 import { readBenchDrivers, vocabulary } from './wiring.js';
 
@@ -20,10 +21,10 @@ export async function check(files: readonly string[], streams: Streams): Promise
     try {
       const file = await readAnyFile(path, vocabulary);
       const also = await checkTogether(file);
-      streams.stdout.write(`${printable(path)}: a ${file.value.kind} file, and right${also}\n`);
+      say(streams.stdout, `${printable(path)}: a ${file.value.kind} file, and right${also}`, { hang: '  ' });
     } catch (error) {
       if (!(error instanceof RailproofError)) throw error;
-      streams.stderr.write(`${errorText(error)}\n`);
+      say(streams.stderr, errorText(error));
       if (status === exitCodes.conforms) status = error.exitCode;
     }
   }

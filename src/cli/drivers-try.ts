@@ -11,10 +11,10 @@ import { type Trial, tryDriver, type TrialResult } from '../instrument/trial.js'
 import { printable } from '../quantity/printable.js';
 import { StoppedByOperator } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
-import { fitted } from '../quantity/word-wrap.js';
 import { connectors } from './connectors.js';
 import { atDriverLine, driverLine } from './driver-line.js';
 import { errorText } from './error-text.js';
+import { say } from './say.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
 import { countLine, meetingText, paceText, resultText, trialAsJson } from './trial-shown.js';
@@ -42,7 +42,7 @@ export async function tryOut(wanted: TryWanted, streams: Streams): Promise<ExitC
   // What was recorded took its time then.
   const clock = address.kind === 'replay' ? new VirtualClock(realClock.wall()) : realClock;
   const connection = await connectors(clock)(address, driver, driver.role);
-  const say = (text: string): void => {
+  const show = (text: string): void => {
     if (!json) streams.stdout.write(text);
   };
   const results: TrialResult[] = [];
@@ -60,12 +60,12 @@ export async function tryOut(wanted: TryWanted, streams: Streams): Promise<ExitC
       trace: (entry) => entries.push(entry),
       onMeeting: (meeting) => {
         trial = { meeting };
-        say(meetingText(meeting));
+        show(meetingText(meeting));
       },
       onResult: (result) => {
         results.push(result);
         const place = driverLine(result.at, [file]);
-        say(`${resultText(result, streams.stdout.columns, place)}\n`);
+        show(`${resultText(result, streams.stdout.columns, place)}\n`);
       },
       onPace: () => {
         if (json) return;
@@ -73,7 +73,7 @@ export async function tryOut(wanted: TryWanted, streams: Streams): Promise<ExitC
       },
     });
     trial = done;
-    if (done.pace && done.proposal) say(paceText(driver, done.pace, done.proposal, streams.stdout.columns));
+    if (done.pace && done.proposal) show(paceText(driver, done.pace, done.proposal, streams.stdout.columns));
     if (files && done.meeting.kind === 'answered') {
       await writeAdapted(files, file, { address: connection.address, trial: done });
       written.push(files.driver);
@@ -93,7 +93,7 @@ export async function tryOut(wanted: TryWanted, streams: Streams): Promise<ExitC
     written.push(files.dialogue);
   }
   streams.stdout.write(json ? trialAsJson(driver, results, trial, written) : countLine(results));
-  for (const path of written) say(`written: ${printable(path)}\n`);
+  for (const path of written) show(`written: ${printable(path)}\n`);
   return tell(driver, results, ending, streams);
 }
 
@@ -109,16 +109,12 @@ async function agree(
   const { stdin: input, stderr: output } = streams;
   const operator = new TerminalOperator({ input, output, yes: false, interrupted: stop.wish });
   if (!operator.present) return false;
-  const text = `${question}\nType yes to try it; anything else leaves it out.`;
-  const answer = await operator
-    .ask({ name: 'switch-on', text, answer: 'text' }, stop.signal)
-    .catch((error: unknown) => {
-      // Whoever says no more has not said yes; the trial ends as it should, with what it has come to.
-      if (!(error instanceof StoppedByOperator)) throw error;
-      output.write('\n');
-      return '';
-    });
-  return /^y(es)?$/i.test(answer);
+  const text = `\n${question}\nType yes to try it; anything else leaves it out.\n> `;
+  return operator.typesYes(text, stop.signal).catch((error: unknown) => {
+    // Whoever says no more has not said yes; the trial ends as it should, with what it has come to.
+    if (error instanceof StoppedByOperator) return false;
+    throw error;
+  });
 }
 
 function requireChannel({ name, channels }: Driver, channel: number | undefined): void {
@@ -135,13 +131,13 @@ function tell(
   ending: Ending,
   { stderr }: Streams,
 ): ExitCode {
-  if (ending.how !== 'as-it-should') stderr.write(`${fitted(errorText(ending.error), stderr.columns)}\n`);
+  if (ending.how !== 'as-it-should') say(stderr, errorText(ending.error));
   const proof = results.findLast(({ part }) => part === 'proof');
   const off = ending.how !== 'broken-off' && proof?.verdict === 'understood';
   const mayBeOn = { load: loadMayStillBeOn, source: sourceMayStillBeOn }[driver.role as string];
   if (mayBeOn !== undefined) {
     const lastWords = off ? `The ${driver.role} is off; it was read back.` : mayBeOn;
-    stderr.write(`${fitted(lastWords, stderr.columns)}\n`);
+    say(stderr, lastWords);
   }
   if (ending.how !== 'as-it-should') return exitCodeOf(ending.error);
   if (mayBeOn !== undefined && !off) return exitCodes.instrument;

@@ -7,6 +7,7 @@ import type { DriversOptions } from './drivers.js';
 import { errorText } from './error-text.js';
 import { packageFacts } from './package-facts.js';
 import type { RunOptions } from './run-wanted.js';
+import { say } from './say.js';
 import type { SelectOptions } from './select.js';
 import type { Streams } from './streams.js';
 
@@ -24,7 +25,7 @@ export async function main(argv: readonly string[], streams: Streams): Promise<E
     return status;
   } catch (error) {
     if (error instanceof CommanderError) return error.exitCode === 0 ? exitCodes.conforms : exitCodes.usage;
-    streams.stderr.write(`${errorText(error)}\n`);
+    say(streams.stderr, errorText(error));
     return exitCodeOf(error);
   }
 }

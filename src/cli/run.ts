@@ -8,7 +8,6 @@ import type { Bench } from '../files/bench.js';
 import { needsOperator } from '../run/plan-circuit.js';
 import { OperatorAbsentError } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
-import { fitted } from '../quantity/word-wrap.js';
 import type { Operator } from '../steps/operator.js';
 import { atDriverLine } from './driver-line.js';
 import { errorText } from './error-text.js';
@@ -22,6 +21,7 @@ import { resumeHint } from './resume-hint.js';
 import { loadResumed } from './resume-plan.js';
 import { resumptionAsText } from './resume-shown.js';
 import { type RunOptions, runWanted } from './run-wanted.js';
+import { say } from './say.js';
 import { shown } from './shown.js';
 import { simulatedOperator } from './simulated-operator.js';
 import { stopOnSignals, type StopWishes } from './stop-signals.js';
@@ -89,7 +89,7 @@ async function playPlain(
 async function playTraced(loaded: LoadedPlan, stage: Stage): Promise<PlanPerformed> {
   const { stderr } = stage.streams;
   const { world, operator, files } = tracedRun(stage.world, stage.operator, (text) => {
-    stderr.write(`\n${fitted(printable(text), stderr.columns)}\n`);
+    say(stderr, `\n${printable(text)}`);
   });
   try {
     return await playPlain(loaded, { ...stage, world, operator }, (folder) => {
@@ -114,11 +114,11 @@ function tell(
   const { understood, ending, folder, status } = performed;
   if (understood.kind === 'result') streams.stdout.write(shown(understood.result, json, streams));
   streams.stderr.write(`record: ${printable(folder.path)}\n`);
-  if (ending.how !== 'completed') streams.stderr.write(`${errorText(atDriverLine(ending.error, drivers))}\n`);
-  if (understood.kind === 'error') streams.stderr.write(`${errorText(understood.error)}\n`);
+  if (ending.how !== 'completed') say(streams.stderr, errorText(atDriverLine(ending.error, drivers)));
+  if (understood.kind === 'error') say(streams.stderr, errorText(understood.error));
   if (understood.kind === 'result' && understood.unkept !== undefined) {
     const missing = printable(understood.unkept.message);
-    streams.stderr.write(`${missing}; the journal holds it all, and \`railproof analyse\` shows it.\n`);
+    say(streams.stderr, `${missing}; the journal holds it all, and \`railproof analyse\` shows it.`);
   }
   if (understood.kind === 'result') streams.stderr.write(resumeHint(folder.path, understood.result));
   tellSafety(performed, streams);
@@ -139,8 +139,8 @@ function tellSafety({ safety, sourceSafety }: PlanPerformed, { stderr }: Streams
   }
   for (const { what, safety } of each.reverse()) {
     if (safety.kind === 'confirmed') continue;
-    const words = `\nIt could not be confirmed that the ${what} is off: ${printable(safety.why)}\n${safety.advice}\n`;
-    stderr.write(fitted(words, stderr.columns));
+    const why = printable(safety.why);
+    say(stderr, `\nIt could not be confirmed that the ${what} is off: ${why}\n${safety.advice}`);
   }
 }
 

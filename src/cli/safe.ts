@@ -13,6 +13,7 @@ import type { FileRead } from '../files/read-text.js';
 import { printable } from '../quantity/printable.js';
 import { lineBehind } from './driver-line.js';
 import { errorText } from './error-text.js';
+import { say } from './say.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
 import { type DriverFiles, planDrivers, readBenchDrivers, type World, worldOf } from './wiring.js';
@@ -38,10 +39,10 @@ export async function safe(wanted: { readonly bench: string }, streams: Streams)
     const status = source === undefined ? exitCodes.conforms : await sourceOff(file, way, streams);
     if (load.safety.kind === 'confirmed') return status;
     // Of both it is the load that must not be missed.
-    if (source !== undefined) streams.stderr.write(`${load.safety.advice}\n`);
+    if (source !== undefined) say(streams.stderr, load.safety.advice);
     return exitCodes.instrument;
   } catch (error) {
-    streams.stderr.write(`${errorText(error)}\n${loadMayStillBeOn}\n`);
+    say(streams.stderr, `${errorText(error)}\n${loadMayStillBeOn}`);
     return exitCodeOf(error);
   } finally {
     stop.release();
@@ -65,7 +66,7 @@ async function sourceOff(
     tell('source', source, drivers, streams);
     return source.safety.kind === 'confirmed' ? exitCodes.conforms : exitCodes.instrument;
   } catch (error) {
-    streams.stderr.write(`${errorText(error)}\n${sourceMayStillBeOn}\n`);
+    say(streams.stderr, `${errorText(error)}\n${sourceMayStillBeOn}`);
     return exitCodeOf(error);
   }
 }
@@ -82,13 +83,13 @@ function tell(
   { stdout, stderr }: Streams,
 ): void {
   if (safety.kind === 'confirmed') {
-    stdout.write(`The ${what} at ${printable(address)} is off; it was read back.\n`);
+    say(stdout, `The ${what} at ${printable(address)} is off; it was read back.`);
   } else {
     const place = lineBehind(
       safety.cause,
       drivers.map(({ file }) => file),
     );
     const why = printable(safety.why) + (place === undefined ? '' : `; see ${printable(place)}`);
-    stderr.write(`It could not be confirmed that the ${what} is off: ${why}\n${safety.advice}\n`);
+    say(stderr, `It could not be confirmed that the ${what} is off: ${why}\n${safety.advice}`);
   }
 }

@@ -6,6 +6,7 @@ import { readBench } from '../files/read-bench.js';
 import { printable } from '../quantity/printable.js';
 import { type ServedBench, serveBench } from '../simulation/serve.js';
 import { errorText } from './error-text.js';
+import { say } from './say.js';
 import type { Streams } from './streams.js';
 import { planDrivers, readBenchDrivers } from './wiring.js';
 
@@ -54,7 +55,7 @@ async function doAsTyped(operator: ServedBench['operator'], { stdin, stderr }: S
       await operator.act(act);
       stderr.write(`done: ${printable(act)}\n`);
     } catch (error) {
-      stderr.write(`${errorText(error)}\n`);
+      say(stderr, errorText(error));
     }
   }
 }

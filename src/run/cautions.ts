@@ -1,3 +1,5 @@
+import { named } from '../steps/isolation-prompts.js';
+import { cautionTexts } from '../record/caution-texts.js';
 import type { UnderTest } from '../steps/under-test.js';
 import type { Module } from '../files/module.js';
 import type { CautionName, Procedure } from '../files/procedure.js';
@@ -20,6 +22,25 @@ export function cautionsFor(
     ]),
   ];
 }
+
+/**
+ * A caution as it is put to the person, with the modules that it is about where it is not about all of several: which
+ * of them the mains feed, on whose earth something was done.
+ */
+export function cautionOf(name: CautionName, { modules }: Pick<UnderTest, 'modules'>): string {
+  const concerned = modules.filter(concerns[name]);
+  const some = concerned.length > 0 && concerned.length < modules.length;
+  return some ? `${cautionTexts[name]} This concerns ${named(concerned)}.` : cautionTexts[name];
+}
+
+const all = (): boolean => true;
+const concerns: Readonly<Record<CautionName, (module: Module) => boolean>> = {
+  mains: ({ input }) => input === 'mains',
+  'hot-surfaces': all,
+  'stored-charge': all,
+  'floating-outputs': all,
+  'earth-link-removed': earthWasWorkedOn,
+};
 
 function earthWasWorkedOn({ changes }: Module): boolean {
   return changes.some(({ what }) => /\bearth/i.test(what));

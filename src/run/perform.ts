@@ -7,11 +7,11 @@ import { type Trip, tripOf } from '../bench/trip.js';
 import type { Clock } from '../clock/clock.js';
 import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
-import { cautionTexts } from '../record/caution-texts.js';
 import type { Carried, JournalEvent } from '../record/journal-event.js';
 import type { Operator } from '../steps/operator.js';
 import { startUp } from '../steps/start-up.js';
 import type { Progress, StepContext, Tried } from '../steps/step-kind.js';
+import { cautionOf } from './cautions.js';
 import type { Plan } from './plan.js';
 import { StoppedByOperator, UnforeseenError } from './stopped.js';
 import type { TakenOver } from './taken-over.js';
@@ -150,7 +150,7 @@ async function begin({ plan, bench, journal, operator, signal, from }: Performan
   }
   for (const caution of plan.cautions) {
     signal.throwIfAborted();
-    const acknowledged = await operator.acknowledge(caution, cautionTexts[caution], signal);
+    const acknowledged = await operator.acknowledge(caution, cautionOf(caution, plan.underTest), signal);
     if (acknowledged === 'refused')
       throw new StoppedByOperator(`the caution "${caution}" was not acknowledged`);
     journal.append({ event: 'caution', name: caution, by: acknowledged });

@@ -1,6 +1,7 @@
 import { createInterface } from 'node:readline/promises';
 import type { Readable, Writable } from 'node:stream';
 import { printableLines } from '../quantity/printable.js';
+import type { Dimension } from '../quantity/quantity.js';
 import type { Acknowledgement } from '../record/journal-event.js';
 import type { Operator, OperatorRequest } from '../steps/operator.js';
 import { StoppedByOperator } from './stopped.js';
@@ -8,6 +9,22 @@ import { fitted } from '../quantity/word-wrap.js';
 
 /** Longer lines are hard to read, however wide the window. */
 const widestText = 100;
+
+/** Beyond the indentation, the width of `1. `. */
+const numberedHang = '   ';
+
+/** What is to be typed, with an example that is taken as it stands. */
+export const typedAs: Readonly<Record<Dimension, string>> = {
+  voltage: 'volts, for example 15.02 V',
+  current: 'amperes, for example 3.98 A',
+  resistance: 'ohms, for example 51 mohm',
+  power: 'watts, for example 60.2 W',
+  time: 'seconds or minutes, for example 1.5 min',
+  temperature: 'degrees Celsius, for example 23.5 degC',
+  'temperature-difference': 'kelvins, for example 12 K',
+  ratio: 'per cent, for example 5 %',
+  'voltage-rate': 'volts an hour, for example 0.02 V/h',
+};
 
 interface Terminal {
   readonly input: Readable & { readonly isTTY?: boolean };
@@ -33,42 +50,63 @@ export class TerminalOperator implements Operator {
     text: string,
     signal: AbortSignal,
   ): Promise<Acknowledgement | 'refused'> {
-    const heading = caution === 'wiring' ? 'Wiring:\n' : `Caution, ${caution.replaceAll('-', ' ')}: `;
-    this.#say(`\n${heading}${text}\n`);
+    const isWiring = caution === 'wiring';
+    if (isWiring) this.#say(`\nWiring, with nothing switched on yet:\n${numbered(text)}\n`, numberedHang);
+    else this.#say(`\nCaution, ${caution.replaceAll('-', ' ')}: ${text}\n`);
     if (this.#terminal.yes) {
       this.#say('Acknowledged by --yes.\n');
       return '--yes';
     }
-    const answer = await this.#question('Understood and taken care of? Type yes: ', signal);
-    return /^y(es)?$/i.test(answer.trim()) ? 'operator' : 'refused';
+    const asked = isWiring ? 'Is it wired so?' : 'Understood and taken care of?';
+    const agreed = await this.typesYes(`${asked} Type yes; anything else ends the run: `, signal);
+    return agreed ? 'operator' : 'refused';
   }
 
   async ask({ text, answer }: OperatorRequest, signal: AbortSignal): Promise<string> {
-    if (answer === 'done') return this.#untilDone(text, signal);
-    return (await this.#question(`\n${text}\n> `, signal)).trim();
+    this.#say(`\n${text}\n`);
+    if (answer === 'done') return this.#untilDone(signal);
+    const expected = answer === 'text' ? 'In your own words' : `In ${typedAs[answer]}`;
+    return (await this.#question(`${expected}; Ctrl-C stops the run.\n> `, signal)).trim();
+  }
+
+  /** Whether the answer is yes; whatever else is typed is no. @throws the signal's reason when it is taken away. */
+  async typesYes(question: string, signal: AbortSignal): Promise<boolean> {
+    return /^y(es)?$/i.test((await this.#question(question, signal)).trim());
   }
 
   /** Only Enter, or a word that says so, means done: whoever types "wait" must not be taken at another word. */
-  async #untilDone(text: string, signal: AbortSignal): Promise<'done'> {
-    let question = `\n${text}\nPress Enter when it is done. `;
+  async #untilDone(signal: AbortSignal): Promise<'done'> {
+    let question = 'Press Enter when it is done; Ctrl-C stops the run. ';
     while (!/^(done|y|yes)?$/i.test((await this.#question(question, signal)).trim())) {
-      question = 'Not done, then. Press Enter when it is; Ctrl-C stops and leaves the load off. ';
+      question = 'Not done, then. Press Enter when it is; Ctrl-C stops the run, with the load off. ';
     }
     return 'done';
   }
 
-  #say(text: string): void {
-    this.#terminal.output.write(this.#fitted(text));
+  #say(text: string, hang = ''): void {
+    this.#terminal.output.write(this.#fitted(text, hang));
   }
 
-  #fitted(text: string): string {
-    return fitted(printableLines(text), this.#terminal.output.columns, { widest: widestText });
+  #fitted(text: string, hang = ''): string {
+    return fitted(printableLines(text), this.#terminal.output.columns, { widest: widestText, hang });
   }
 
-  /** At the end of the input a question would never be answered, so that is taken as a wish to stop. */
+  /**
+   * At the end of the input a question would never be answered, so that is taken as a wish to stop. A question that
+   * its signal takes away leaves a whole line (readline ends it), and nothing of what was typed for the next one.
+   */
   async #question(text: string, signal: AbortSignal): Promise<string> {
     const { input, output } = this.#terminal;
     if (input.readableEnded || input.destroyed) throw closedAtQuestion();
+    signal.throwIfAborted();
+    const lines = this.#fitted(text).split('\n');
+    const prompt = lines.pop() ?? '';
+    if (lines.length > 0) output.write(`${lines.join('\n')}\n`);
+    return this.#answer(prompt, signal);
+  }
+
+  async #answer(prompt: string, signal: AbortSignal): Promise<string> {
+    const { input, output } = this.#terminal;
     const closed = new AbortController();
     const lines = createInterface({ input, output });
     lines.once('close', () => {
@@ -82,7 +120,7 @@ export class TerminalOperator implements Operator {
       this.#terminal.interrupted();
     });
     try {
-      return await lines.question(this.#fitted(text), { signal: AbortSignal.any([signal, closed.signal]) });
+      return await lines.question(prompt, { signal: AbortSignal.any([signal, closed.signal]) });
     } catch (error) {
       if (signal.aborted) throw signal.reason;
       if (closed.signal.aborted) throw closed.signal.reason;
@@ -91,6 +129,14 @@ export class TerminalOperator implements Operator {
       lines.close();
     }
   }
+}
+
+/** A list where there is more than one thing to do. */
+function numbered(text: string): string {
+  const lines = text.split('\n');
+  return lines
+    .map((line, index) => (lines.length === 1 ? `  ${line}` : `  ${index + 1}. ${line}`))
+    .join('\n');
 }
 
 function closedAtQuestion(): StoppedByOperator {

@@ -1,7 +1,9 @@
 import { PassThrough } from 'node:stream';
 import { describe, expect, it } from 'vitest';
 import { StoppedByOperator } from '../../src/run/stopped.js';
-import { TerminalOperator } from '../../src/run/terminal-operator.js';
+import { TerminalOperator, typedAs } from '../../src/run/terminal-operator.js';
+import { parseQuantity } from '../../src/quantity/parse-quantity.js';
+import type { Dimension } from '../../src/quantity/quantity.js';
 
 /** A terminal with someone at it who types. */
 function terminal(facts: { readonly yes?: boolean; readonly isTTY?: boolean; readonly keys?: 'raw' } = {}) {
@@ -42,7 +44,9 @@ describe('a caution on a terminal', () => {
     const asked = operator.acknowledge('hot-surfaces', text, never);
     input.write(`${answer}\n`);
     expect(await asked).toBe(taken);
-    expect(shown()).toBe(`\nCaution, hot surfaces: ${text}\nUnderstood and taken care of? Type yes: `);
+    expect(shown()).toBe(
+      `\nCaution, hot surfaces: ${text}\nUnderstood and taken care of? Type yes; anything else ends the run: `,
+    );
   });
 
   it('is shown and not asked for where --yes was given', async () => {
@@ -58,7 +62,7 @@ describe('an act on a terminal', () => {
     const asked = operator.ask({ name: 'plug', text: 'Plug K1 in.', answer: 'done' }, never);
     input.write('\n');
     expect(await asked).toBe('done');
-    expect(shown()).toBe('\nPlug K1 in.\nPress Enter when it is done. ');
+    expect(shown()).toBe('\nPlug K1 in.\nPress Enter when it is done; Ctrl-C stops the run. ');
   });
 
   it('is not done when something else is typed, and is asked for again', async () => {
@@ -75,7 +79,9 @@ describe('an act on a terminal', () => {
     const asked = operator.ask({ name: 'air', text: 'How warm is it?', answer: 'temperature' }, never);
     input.write('  23 °C \n');
     expect(await asked).toBe('23 °C');
-    expect(shown()).toBe('\nHow warm is it?\n> ');
+    expect(shown()).toBe(
+      '\nHow warm is it?\nIn degrees Celsius, for example 23.5 degC; Ctrl-C stops the run.\n> ',
+    );
   });
 
   it('is asked for in whole lines on a terminal that does not know its width', async () => {
@@ -84,7 +90,7 @@ describe('an act on a terminal', () => {
     const asked = operator.ask({ name: 'plug', text: 'Plug K1 in.', answer: 'done' }, never);
     input.write('\n');
     expect(await asked).toBe('done');
-    expect(shown()).toContain('Plug K1 in.\nPress Enter when it is done.');
+    expect(shown()).toContain('Plug K1 in.\nPress Enter when it is done;');
   });
 
   it('can be followed by another on the same terminal', async () => {
@@ -156,6 +162,79 @@ describe('a question on a terminal never hangs', () => {
     const asked = ask(operator);
     input.write('\u0004');
     await expect(asked).rejects.toMatchObject(closed);
+  });
+});
+
+describe('a question that is answered elsewhere', () => {
+  it('is taken away with its line ended, and what was typed of an answer is not taken for the next', async () => {
+    const { input, operator, shown } = terminal({ keys: 'raw' });
+    const elsewhere = new AbortController();
+    const first = operator.ask(
+      { name: 'air', text: 'How warm is it?', answer: 'temperature' },
+      elsewhere.signal,
+    );
+    input.write('21 de');
+    await expect.poll(shown).toContain('21 de');
+    elsewhere.abort(new Error('answered elsewhere'));
+    await expect(first).rejects.toThrow('answered elsewhere');
+    expect(shown()).toMatch(/> .*21 de\r\n$/s);
+    const second = operator.ask({ name: 'plug', text: 'What is on its plug?', answer: 'text' }, never);
+    input.write('a ring\r');
+    expect(await second).toBe('a ring');
+  });
+
+  it('is not shown at all where it was answered before', async () => {
+    const { operator, shown } = terminal();
+    const signal = AbortSignal.abort(new Error('answered elsewhere'));
+    await expect(operator.typesYes('Switch it on? ', signal)).rejects.toThrow('answered elsewhere');
+    expect(shown()).toBe('');
+  });
+
+  it('is taken away from a pipe in the same way', async () => {
+    const { operator, shown } = terminal();
+    const elsewhere = new AbortController();
+    const asked = operator.typesYes('Switch it on? ', elsewhere.signal);
+    elsewhere.abort(new Error('answered elsewhere'));
+    await expect(asked).rejects.toThrow('answered elsewhere');
+    expect(shown()).toBe('Switch it on? \r\n');
+  });
+});
+
+describe('what is to be wired', () => {
+  it('is a numbered list, that hangs within the window', async () => {
+    const { input, output, operator, shown } = terminal();
+    Object.assign(output, { columns: 40 });
+    const asked = operator.acknowledge(
+      'wiring',
+      'Module unplugged, and its output at the load.\nPlug it in.',
+      never,
+    );
+    input.write('yes\n');
+    expect(await asked).toBe('operator');
+    expect(shown()).toBe(
+      [
+        '',
+        'Wiring, with nothing switched on yet:',
+        '  1. Module unplugged, and its output at',
+        '     the load.',
+        '  2. Plug it in.',
+        'Is it wired so? Type yes; anything else',
+        'ends the run: ',
+      ].join('\n'),
+    );
+  });
+
+  it('is no list where it is one thing', async () => {
+    const { operator, shown } = terminal({ yes: true });
+    await operator.acknowledge('wiring', 'Plug it in.', never);
+    expect(shown()).toContain(':\n  Plug it in.\n');
+  });
+});
+
+describe('the example of an answer', () => {
+  it.each(Object.entries(typedAs))('of %s is taken as it stands: %s', (dimension, words) => {
+    const example = /for example (.+)$/.exec(words)?.[1] ?? '';
+    expect(parseQuantity(example, dimension as Dimension)).toBeGreaterThan(0);
   });
 });
 

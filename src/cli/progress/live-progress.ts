@@ -74,12 +74,12 @@ export function liveProgress(
     soon();
   };
 
-  stream.write = ((chunk: string | Uint8Array, ...rest: never[]): boolean => {
+  stream.write = (chunk: string | Uint8Array, ...rest: never[]): boolean => {
     takeAway();
     const text = typeof chunk === 'string' ? chunk : Buffer.from(chunk).toString('latin1');
     if (text !== '') isLineOpen = !text.endsWith('\n');
     return write(chunk, ...rest);
-  });
+  };
 
   const resized = (): void => {
     takeAway();

@@ -1,0 +1,13 @@
+import { fitted } from '../quantity/word-wrap.js';
+
+/** Longer lines are hard to read, however wide the window. */
+const widest = 100;
+
+/** Words for a person, ended by a line: within the width of a terminal, and a line each in a pipe. */
+export function say(
+  stream: { write(text: string): unknown; readonly columns?: number },
+  text: string,
+  { hang = '' } = {},
+): void {
+  stream.write(`${fitted(text, stream.columns, { widest, hang })}\n`);
+}
