@@ -2,12 +2,27 @@ import { jsonText } from '../report/json-text.js';
 import { resultAsJson } from '../report/json.js';
 import type { Result } from '../report/result.js';
 import { styleFor } from '../report/style.js';
+import { chartsAsText } from '../report/terminal-chart/result-charts.js';
 import { resultAsText } from '../report/text.js';
+import { showsUnicode } from '../report/unicode-terminal.js';
+import { fitted } from '../quantity/word-wrap.js';
 import type { Streams } from './streams.js';
 
-/** A result as stdout shows it: one JSON object, or the report. */
-export function shown(result: Result, json: boolean, streams: Streams): string {
-  return json
-    ? jsonText(resultAsJson(result))
-    : resultAsText(result, styleFor(streams.stdout, streams.environment));
+const chart = { width: 72, height: 16 };
+
+/**
+ * A result as stdout shows it: one JSON object, or the report. On a terminal a small chart ends it; a pipe is for
+ * programs that look for lines, and has none.
+ */
+export function shown(result: Result, json: boolean, { stdout, environment }: Streams): string {
+  if (json) return jsonText(resultAsJson(result));
+  const text = resultAsText(result, styleFor(stdout, environment), stdout.columns);
+  if (!stdout.isTTY) return text;
+  const columns = stdout.columns === 0 ? chart.width : stdout.columns;
+  const charts = chartsAsText(result, {
+    width: Math.min(chart.width, columns - 1),
+    height: chart.height,
+    unicode: showsUnicode(environment),
+  });
+  return fitted(text, stdout.columns, { hang: '    ' }) + (charts === '' ? '' : `\n${charts}\n`);
 }

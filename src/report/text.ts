@@ -2,8 +2,9 @@ import { findingNamed } from '../analysis/finding.js';
 import { ratedOf } from '../analysis/rated.js';
 import type { Decision } from '../judgement/judge.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
+import { fitted } from '../quantity/word-wrap.js';
 import type { WatchmanReport } from '../record/watchman-report.js';
-import { alignTable } from './align.js';
+import { fittedTable } from './align.js';
 import { answer } from './answer.js';
 import { columnsOf } from './finding-text.js';
 import { inMinutes } from './in-minutes.js';
@@ -13,16 +14,19 @@ import type { Style } from './style.js';
 import { takenOver, type TakenOverPart } from './taken-over.js';
 import { watchmanText } from './watchman-text.js';
 
-/** The report for a terminal or a text file: the answer first, then what it rests on. */
-export function resultAsText(recorded: Result, style: Style): string {
+/**
+ * The report for a terminal of so many columns, or for a text file, where each row is a line: the answer first, then
+ * what it rests on.
+ */
+export function resultAsText(recorded: Result, style: Style, columns?: number): string {
   const result = withPrintableTexts(recorded);
   return [
     heading(result, style),
-    ...warnings(result, style),
-    answerAsText(result, style),
-    findingsTable(result, style),
-    derivation(result, style),
-    decisionsTable(result, style),
+    ...warnings(result, style, columns),
+    answerAsText(result, style, columns),
+    findingsTable(result, style, columns),
+    derivation(result, style, columns),
+    decisionsTable(result, style, columns),
     footing(result),
   ]
     .filter((part) => part !== '')
@@ -90,7 +94,7 @@ function againstWhat({ baseline }: Result['header']): readonly string[] {
   return [`compared with ${run}, tolerance ${tolerance.name}: ${tolerance.title}`];
 }
 
-function warnings(result: Result, style: Style): string[] {
+function warnings(result: Result, style: Style, columns?: number): string[] {
   const { how, reason } = endedHow(result);
   const { integrity } = result;
   const lines: string[] = [];
@@ -116,7 +120,7 @@ function warnings(result: Result, style: Style): string[] {
     );
   if (how === 'stopped') lines.push(`STOPPED: ${(reason ?? '').replace(/^stopped /, '')}`);
   if (how === 'failed') lines.push(`FAILED: ${reason ?? ''}`);
-  return lines.map((line) => style.warn(line));
+  return lines.map((line) => style.warn(fitted(line, columns)));
 }
 
 /** What became of the program, and of the load. */
@@ -127,12 +131,12 @@ function watchmanInWords(report: WatchmanReport): string[] {
     : [text, 'THE LOAD MAY BE ON: `railproof safe --bench <file>` switches it off.'];
 }
 
-function answerAsText(result: Result, style: Style): string {
-  const [first, ...others] = answer(result);
+function answerAsText(result: Result, style: Style, columns?: number): string {
+  const [first, ...others] = answer(result).map((line) => fitted(line, columns));
   return first === undefined ? '' : [style.strong(first), ...others].join('\n');
 }
 
-function findingsTable({ findings }: Result, style: Style): string {
+function findingsTable({ findings }: Result, style: Style, columns?: number): string {
   if (findings.length === 0) return 'No findings: the record holds too little.';
   const rows = findings.map((finding) => {
     const { value, uncertainty, unit } = columnsOf(finding);
@@ -147,14 +151,11 @@ function findingsTable({ findings }: Result, style: Style): string {
       finding.note,
     ];
   });
-  const table = alignTable(rows, ['left', 'right', 'left', 'right', 'left', 'left', 'left']);
-  return [
-    style.strong('Findings') + '   value ± expanded uncertainty, 95 %',
-    ...table.map((row) => `  ${row}`),
-  ].join('\n');
+  const table = fittedTable(rows, ['left', 'right', 'left', 'right', 'left', 'left', 'left'], columns);
+  return [style.strong('Findings') + '   value ± expanded uncertainty, 95 %', ...table].join('\n');
 }
 
-function derivation({ findings }: Result, style: Style): string {
+function derivation({ findings }: Result, style: Style, columns?: number): string {
   const recommended = findingNamed(findings, 'recommended-current');
   const usable = findingNamed(findings, 'usable-current');
   if (recommended === undefined || usable === undefined) return '';
@@ -164,8 +165,8 @@ function derivation({ findings }: Result, style: Style): string {
     ...recommended.factors.map(({ name, factor, reason }) => ['×', factor.toFixed(3), name, reason]),
     ['=', amps(Number(recommended.value)), 'recommended-current', recommended.note],
   ];
-  const table = alignTable(rows, ['left', 'right', 'left', 'left']);
-  return [style.strong('How the recommendation comes about'), ...table.map((row) => `  ${row}`)].join('\n');
+  const table = fittedTable(rows, ['left', 'right', 'left', 'left'], columns);
+  return [style.strong('How the recommendation comes about'), ...table].join('\n');
 }
 
 const verdicts: Readonly<Record<Decision['outcome'], string>> = {
@@ -174,7 +175,7 @@ const verdicts: Readonly<Record<Decision['outcome'], string>> = {
   undecided: 'undecided',
 };
 
-function decisionsTable({ decisions }: Result, style: Style): string {
+function decisionsTable({ decisions }: Result, style: Style, columns?: number): string {
   if (decisions.length === 0) return '';
   const rows = decisions.map(({ outcome, finding, requirement, probability, note }) => [
     verdicts[outcome],
@@ -184,11 +185,10 @@ function decisionsTable({ decisions }: Result, style: Style): string {
       .filter((part) => part !== '')
       .join('; '),
   ]);
-  const table = alignTable(rows, ['left', 'left', 'left', 'left']);
-  return [
-    style.strong('Decisions') + '   guard band as wide as the expanded uncertainty',
-    ...table.map((row) => `  ${row}`),
-  ].join('\n');
+  const table = fittedTable(rows, ['left', 'left', 'left', 'left'], columns);
+  return [style.strong('Decisions') + '   guard band as wide as the expanded uncertainty', ...table].join(
+    '\n',
+  );
 }
 
 /** Never 100 % and never 0 %: nothing measured is that sure. */
