@@ -1,12 +1,18 @@
 /**
  * A text in lines no longer than the width, broken between words; a longer word keeps a line of its own. What goes on
- * from a line begins with `hang`.
+ * from a line begins with `hang`. A number and its unit are one word.
  */
 export function wordWrap(text: string, width: number, hang = ''): string {
-  return text
+  return unbroken(text)
     .split('\n')
     .map((line) => wrapLine(line, width, hang))
-    .join('\n');
+    .join('\n')
+    .replaceAll('\u00a0', ' ');
+}
+
+/** A number and its unit stay on one line. */
+function unbroken(text: string): string {
+  return text.replace(/(?<=\d) (?=(?:[µmkM]?[VAΩWKs]|min|h|%|°C)(?![\p{L}\d]))/gu, '\u00a0');
 }
 
 /**
@@ -22,6 +28,12 @@ export function fitted(
   return wordWrap(text, width - indent.length, hang).replace(/^/gm, indent);
 }
 
+/** How wide a text stands on a terminal: its colours take no room. */
+function seen(text: string): number {
+  // eslint-disable-next-line no-control-regex
+  return Array.from(text.replace(/\u001b\[[\d;]*m/g, '')).length;
+}
+
 /** An indented line goes on as far in as it began. */
 function wrapLine(line: string, width: number, hang: string): string {
   const lead = /^ */.exec(line)?.[0] ?? '';
@@ -30,8 +42,8 @@ function wrapLine(line: string, width: number, hang: string): string {
   let isEmpty = true;
   for (const word of line.slice(lead.length).split(' ')) {
     const longer = isEmpty ? current + word : `${current} ${word}`;
-    if (longer.length > width && !isEmpty) {
-      lines.push(current);
+    if (seen(longer) > width && !isEmpty) {
+      lines.push(current.trimEnd());
       current = lead + hang + word;
     } else {
       current = longer;

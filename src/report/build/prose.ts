@@ -6,14 +6,9 @@ const width = 78;
 
 /** Prose in lines that fit 80 columns; the first line begins as told, the others are set in as far. */
 export function prose(text: string, before = ''): string {
-  const [first = '', ...others] = wordWrap(unbroken(text), width - before.length).split('\n');
+  const [first = '', ...others] = wordWrap(text, width - before.length).split('\n');
   const indent = ' '.repeat(before.length);
-  return [before + first, ...others.map((line) => indent + line)].join('\n').replaceAll('\u00a0', ' ');
-}
-
-/** A number and its unit stay on one line. */
-function unbroken(text: string): string {
-  return text.replace(/(?<=\d) (?=(?:[µmkM]?[VAΩWKs]|%|°C)(?![\p{L}\d]))/gu, '\u00a0');
+  return [before + first, ...others.map((line) => indent + line)].join('\n');
 }
 
 /** Each a dash and its text. */
