@@ -5,6 +5,7 @@ import { changesInWords } from './changes.js';
 import { inOneLine } from './finding-text.js';
 import { groupAnswer } from './group-answer.js';
 import { earthAnswer, moduleAnswer } from './module-answer.js';
+import { printable } from './printable.js';
 import { endedHow, type Result } from './result.js';
 
 /**
@@ -16,6 +17,7 @@ export function answer(result: Result): readonly string[] {
   const [first, ...reasons] = advice(result);
   return [
     ...verdict(result),
+    ...unfinished(result),
     ...(first === undefined ? [] : [first]),
     ...(single ? [...reasons, ...moduleAnswer(result.findings)] : groupAnswer(result)),
     ...earthAnswer(result.findings),
@@ -31,19 +33,35 @@ function advice(result: Result): readonly string[] {
   if (recommended === undefined || usable === undefined) return [];
   const current = Number(recommended.value);
   const it = { single: 'it', parallel: 'the group', series: 'the string' }[result.header.circuit];
+  const isWhole = endedHow(result).how === 'completed';
   const what =
     current > 0
-      ? `${loaded(it, result.outcome)} with up to ${roundedDown(current, 'current')}`
+      ? `${loaded(it, isWhole, result.outcome)} with up to ${roundedDown(current, 'current')}`
       : `do not load ${it}`;
-  const sentence = endedHow(result).how === 'completed' ? what : `as far as the run went, ${what}`;
+  const sentence = isWhole ? what : `as far as the run went, ${what}`;
   return [`${capitalised(sentence)}.`, why(usable)];
 }
 
-/** Who reads one line only must not take what is not accepted for something to be used. */
-function loaded(it: string, outcome: Result['outcome']): string {
-  return outcome === 'does-not-conform'
-    ? `by its limits alone ${it} could be loaded continuously`
-    : `load ${it} continuously`;
+/** Who reads one line only must not take what is not accepted, or not tried to its end, for something to be used. */
+function loaded(it: string, isWhole: boolean, outcome: Result['outcome']): string {
+  if (outcome === 'does-not-conform') return `by its limits alone ${it} could be loaded continuously`;
+  return isWhole ? `load ${it} continuously` : `${it} could be loaded continuously`;
+}
+
+const endedAs = { stopped: 'was stopped', failed: 'failed', 'cut-off': 'was cut off' } as const;
+
+/** A run that was broken off shows less than it was to show, and what comes of it is no release. */
+function unfinished(result: Result): readonly string[] {
+  const { how } = endedHow(result);
+  const { header, evidence, findings } = result;
+  if (how === 'completed' || findings.length === 0) return [];
+  const last = evidence.steps.at(-1);
+  const total = header.steps.length;
+  if (last === undefined) return [`The run ${endedAs[how]} before its first step.`];
+  const where = last.step > evidence.stepsDone ? 'in' : 'after';
+  const of = last.step <= total ? ` of ${total}` : '';
+  const missing = last.step < total || where === 'in' ? '; what it was still to show is missing' : '';
+  return [`The run ${endedAs[how]} ${where} step ${last.step}${of} (${printable(last.kind)})${missing}.`];
 }
 
 /** What may be nothing is no delivery: then only the reason is told. */

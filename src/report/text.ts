@@ -34,11 +34,11 @@ export function resultAsText(recorded: Result, style: Style, columns?: number): 
     .concat('\n');
 }
 
-/** Of the evidence, only the way it ended and what it was resumed from are shown; its points may be many and are left alone. */
+/** Of the evidence, only the way it ended and what it was resumed from are shown; its points may be many and are left alone. Steps are counted only. */
 function withPrintableTexts({ evidence, header, ...rest }: Result): Result {
   return {
     ...printableData(rest),
-    header: printableData({ ...header, steps: [], files: [] }),
+    header: { ...printableData({ ...header, steps: [], files: [] }), steps: header.steps },
     evidence: {
       ...evidence,
       ended: printableData(evidence.ended),

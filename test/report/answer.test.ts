@@ -73,6 +73,41 @@ describe('the answer', () => {
     ]);
   });
 
+  it.each([
+    ['failed', 2, 1, 'The run failed in step 2 of 3 (load-ramp); what it was still to show is missing.'],
+    [
+      'stopped',
+      2,
+      2,
+      'The run was stopped after step 2 of 3 (load-ramp); what it was still to show is missing.',
+    ],
+    ['stopped', 3, 3, 'The run was stopped after step 3 of 3 (load-ramp).'],
+    ['stopped', 4, 4, 'The run was stopped after step 4 (load-ramp).'],
+  ] as const)('of a run that %s says so before what it came to, and does not tell to load it', (...told) => {
+    const [how, step, stepsDone, sentence] = told;
+    const result = resultOf();
+    const [first] = result.evidence.steps;
+    if (first === undefined) throw new Error('no step');
+    const steps = [1, 2, 3].map(() => ({ kind: 'load-ramp', summary: '', settings: {} }));
+    const evidence = {
+      ...result.evidence,
+      ended: { event: 'ended', how, reason: 'the meter is silent', status: 69 } as const,
+      steps: [{ ...first, step, kind: 'load-ramp' }],
+      stepsDone,
+    };
+    const header = { ...result.header, steps };
+    const findings = [recommended(4), usable];
+    const broken = { ...result, header, evidence, findings, decisions: [], outcome: 'not-judged' } as const;
+    expect(answer(broken).slice(0, 2)).toEqual([
+      sentence,
+      'As far as the run went, it could be loaded continuously with up to 4.00 A.',
+    ]);
+    expect(answer({ ...broken, findings: [recommended(0), usable] })[1]).toBe(
+      'As far as the run went, do not load it.',
+    );
+    expect(answer({ ...broken, findings: [] })).toEqual([]);
+  });
+
   it('says how an output stands to earth, of each module where there are several', () => {
     const open: Finding = {
       ...measured('earth-resistance', 'resistance', 1e7, [promised('the meter', 0)], { step: 1 }),
