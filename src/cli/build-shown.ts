@@ -8,6 +8,7 @@ import { jsonText } from '../report/json-text.js';
 import { styleFor } from '../report/style.js';
 import { statusOfBuild } from './exit-status.js';
 import { packageFacts } from './package-facts.js';
+import { show } from './say.js';
 import type { Streams } from './streams.js';
 
 /** How the answer of `combine`, `stages` and `select` is wanted. */
@@ -26,11 +27,9 @@ export async function checkShown({ sheet }: ShownAs): Promise<void> {
 
 /** Says what was worked out, and keeps its sheet; the exit status says whether it may be built. */
 export async function showBuild(build: AnyBuild, wanted: ShownAs, streams: Streams): Promise<ExitCode> {
-  streams.stdout.write(
-    wanted.json === true
-      ? jsonText(buildAsJson(build))
-      : buildAsText(build, styleFor(streams.stdout, streams.environment)),
-  );
+  const { stdout, environment } = streams;
+  if (wanted.json === true) stdout.write(jsonText(buildAsJson(build)));
+  else show(stdout, buildAsText(build, styleFor(stdout, environment)));
   if (wanted.sheet !== undefined) {
     const [{ buildPage }, { writePage }] = await Promise.all([
       import('../report/page/build-page.js'),

@@ -10,6 +10,7 @@ import { styleFor } from '../report/style.js';
 import { understand } from '../report/understand.js';
 import { findTolerance } from './baseline.js';
 import { statusOfOutcome } from './exit-status.js';
+import { show } from './say.js';
 import type { Streams } from './streams.js';
 
 /** `railproof compare`: two records side by side; the exit status says whether all is as it should be. */
@@ -26,11 +27,9 @@ export async function compareRecords(
   const [before, after] = [understand(wanted.earlier), understand(wanted.later)];
   const comparison = compare(sideOf(before), sideOf(after), tolerance.findings);
   const records: ComparedRecords = { before, after, tolerance, comparison };
-  streams.stdout.write(
-    wanted.json === true
-      ? jsonText(comparisonAsJson(records))
-      : comparisonAsText(records, styleFor(streams.stdout, streams.environment)),
-  );
+  const { stdout, environment } = streams;
+  if (wanted.json === true) stdout.write(jsonText(comparisonAsJson(records)));
+  else show(stdout, comparisonAsText(records, styleFor(stdout, environment), stdout.columns));
   return statusOfOutcome(outcomeOf(records));
 }
 

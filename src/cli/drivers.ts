@@ -2,9 +2,8 @@ import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { readDriver } from '../files/read-driver.js';
 import { shippedNames } from '../files/shipped-file.js';
 import { printable } from '../quantity/printable.js';
-import { alignTable } from '../report/align.js';
+import { fittedTable } from '../report/align.js';
 import { jsonText } from '../report/json-text.js';
-import { fitted } from '../quantity/word-wrap.js';
 import type { Streams } from './streams.js';
 import { TrialUsageError } from './trial-usage.js';
 import { shelves, shipped } from './wiring.js';
@@ -45,21 +44,6 @@ function channelOf(text: string | undefined): number | undefined {
   throw new TrialUsageError(`--channel needs the number of a channel, and not "${printable(text)}"`);
 }
 
-/** A line each; where the screen is too narrow for that, what it is stands below its name. */
-function listText(rows: readonly string[][], columns: number | undefined): string {
-  const lines = alignTable(rows, ['left', 'left', 'left']);
-  if (columns === undefined || columns === 0 || lines.every((line) => line.length <= columns)) {
-    return lines.join('\n');
-  }
-  const heads = alignTable(
-    rows.map((row) => row.slice(0, 2)),
-    ['left', 'left'],
-  );
-  return rows
-    .map(([, , summary = ''], at) => `${heads[at] ?? ''}\n${fitted(summary, columns, { indent: '    ' })}`)
-    .join('\n');
-}
-
 async function list(json: boolean, streams: Streams): Promise<ExitCode> {
   const names = await shippedNames(shipped.drivers);
   const found = await Promise.all(names.map(async (name) => (await readDriver(name, shelves)).value));
@@ -68,7 +52,8 @@ async function list(json: boolean, streams: Streams): Promise<ExitCode> {
     streams.stdout.write(jsonText({ format: 'railproof/drivers 1', drivers: listed }));
   } else {
     const rows = found.map(({ name, role, summary }) => [name, role, printable(summary)]);
-    streams.stdout.write(`${listText(rows, streams.stdout.columns)}\n`);
+    const lines = fittedTable(rows, ['left', 'left', 'left'], streams.stdout.columns, '');
+    streams.stdout.write(`${lines.join('\n')}\n`);
   }
   return exitCodes.conforms;
 }

@@ -2,27 +2,28 @@ import { type Ceiling, type Ceilings, ceilingText } from '../bench/ceilings.js';
 import { feedInWords } from '../bench/source.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import { printable } from '../quantity/printable.js';
+import { spokenTime } from '../quantity/spoken-time.js';
 import type { Dimension, Seconds } from '../quantity/quantity.js';
-import { alignTable } from '../report/align.js';
+import { fittedTable } from '../report/align.js';
 import type { Plan } from '../run/plan.js';
 
 /** A plan for a person: what would be done, how long it takes, what the bench never allows; the first `done` steps of it are done. */
-export function planAsText(plan: Plan, done = 0): string {
+export function planAsText(plan: Plan, done = 0, columns?: number): string {
   const rows = plan.steps.map(({ kind, summary, duration }, index) => [
     `${index + 1}`,
     kind.kind,
+    index < done ? 'done' : `about ${spokenTime(Math.ceil(duration))}`,
     printable(summary),
-    index < done ? 'done' : `about ${formatQuantity(Math.ceil(duration), 'time')}`,
   ]);
   return [
     `${plan.procedure.name}: ${printable(plan.procedure.title)}`,
     `${underTestInWords(plan)} on ${printable(plan.bench.name)}`,
     ...plan.procedure.wiring.map((line) => `  wiring: ${printable(line)}`),
-    ...alignTable(rows, ['right', 'left', 'left', 'left']).map((row) => `  ${row}`),
+    ...fittedTable(rows, ['right', 'left', 'right', 'left'], columns),
     `cautions to acknowledge: ${plan.cautions.length === 0 ? 'none' : plan.cautions.join(', ')}`,
     `never above ${ceilingsInWords(plan.ceilings)}`,
     ...sourceInWords(plan),
-    `about ${formatQuantity(Math.ceil(secondsLeft(plan, done)), 'time')} in all; nothing was touched`,
+    `about ${spokenTime(Math.ceil(secondsLeft(plan, done)))} in all; nothing was touched`,
     '',
   ].join('\n');
 }

@@ -2,7 +2,7 @@ import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { listPorts } from '../instrument/ports.js';
 import { printable } from '../quantity/printable.js';
 import { jsonText } from '../report/json-text.js';
-import { alignTable } from '../report/align.js';
+import { fittedTable } from '../report/align.js';
 import type { Streams } from './streams.js';
 
 /** `railproof ports`: the serial ports of this machine, as a bench file would name them. */
@@ -17,7 +17,7 @@ export async function ports({ json }: { readonly json?: boolean }, streams: Stre
       `serial:${printable(path)}?baud=9600`,
       printable(description),
     ]);
-    streams.stdout.write(`${alignTable(rows, ['left', 'left']).join('\n')}\n`);
+    streams.stdout.write(`${fittedTable(rows, ['left', 'left'], streams.stdout.columns, '').join('\n')}\n`);
   }
   return exitCodes.conforms;
 }

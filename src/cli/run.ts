@@ -21,7 +21,7 @@ import { resumeHint } from './resume-hint.js';
 import { loadResumed } from './resume-plan.js';
 import { resumptionAsText } from './resume-shown.js';
 import { type RunOptions, runWanted } from './run-wanted.js';
-import { say } from './say.js';
+import { say, show } from './say.js';
 import { shown } from './shown.js';
 import { simulatedOperator } from './simulated-operator.js';
 import { stopOnSignals, type StopWishes } from './stop-signals.js';
@@ -35,9 +35,11 @@ export async function run(options: RunOptions, streams: Streams): Promise<ExitCo
   const loaded = wanted.kind === 'afresh' ? await loadPlan(wanted) : await loadResumed(wanted);
   const { plan, resumed } = loaded;
   const done = resumed?.from.steps ?? 0;
-  if (resumed !== undefined) streams.stderr.write(resumptionAsText(plan, resumed));
+  if (resumed !== undefined) show(streams.stderr, resumptionAsText(plan, resumed));
   if (options.dryRun === true) {
-    streams.stdout.write(options.json === true ? jsonText(planAsJson(plan, done)) : planAsText(plan, done));
+    const { stdout } = streams;
+    if (options.json === true) stdout.write(jsonText(planAsJson(plan, done)));
+    else show(stdout, planAsText(plan, done, stdout.columns));
     return exitCodes.conforms;
   }
   const runs = options.runs ?? (resumed === undefined ? 'runs' : join(resumed.run.folder.path, '..'));

@@ -6,8 +6,9 @@ import { printable } from '../quantity/printable.js';
 import { readWhole } from '../record/read-whole.js';
 import { runFolderAt } from '../record/run-folder.js';
 import { jsonText } from '../report/json-text.js';
-import { alignTable } from '../report/align.js';
+import { fittedTable } from '../report/align.js';
 import { recordNames } from './record-names.js';
+import { show } from './say.js';
 import type { Streams } from './streams.js';
 
 /** `railproof runs`: the records of a folder, oldest first, a line each. */
@@ -33,12 +34,12 @@ export function runs(
   if (wanted.json === true) {
     streams.stdout.write(jsonText({ format: 'railproof/runs 1', runs: listed }));
   } else if (rows.length === 0) {
-    streams.stdout.write(`No records in ${printable(wanted.folder)}.\n`);
+    show(streams.stdout, `No records in ${printable(wanted.folder)}.\n`);
   } else {
     const head = ['record', 'ended', 'outcome', 'recommended', ''];
-    streams.stdout.write(
-      `${alignTable([head, ...rows], ['left', 'left', 'left', 'right', 'left']).join('\n')}\n`,
-    );
+    const sides = ['left', 'left', 'left', 'right', 'left'] as const;
+    const lines = fittedTable([head, ...rows], sides, streams.stdout.columns, '');
+    show(streams.stdout, `${lines.join('\n')}\n`);
   }
   return exitCodes.conforms;
 }

@@ -5,7 +5,7 @@ import { styleFor } from '../report/style.js';
 import { chartsAsText } from '../report/terminal-chart/result-charts.js';
 import { resultAsText } from '../report/text.js';
 import { showsUnicode } from '../report/unicode-terminal.js';
-import { fitted } from '../quantity/word-wrap.js';
+import { hanging } from './say.js';
 import type { Streams } from './streams.js';
 
 const chart = { width: 72, height: 16 };
@@ -24,5 +24,5 @@ export function shown(result: Result, json: boolean, { stdout, environment }: St
     height: chart.height,
     unicode: showsUnicode(environment),
   });
-  return fitted(text, stdout.columns, { hang: '    ' }) + (charts === '' ? '' : `\n${charts}\n`);
+  return hanging(text, stdout.columns) + (charts === '' ? '' : `\n${charts}\n`);
 }

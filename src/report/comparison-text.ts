@@ -8,13 +8,16 @@ import { printable, printableData } from './printable.js';
 import { endedHow, type Result } from './result.js';
 import type { Style } from './style.js';
 
-/** What changed between two records, for a terminal or a text file: the answer first, then the table. */
-export function comparisonAsText(records: ComparedRecords, style: Style): string {
+/**
+ * What changed between two records, for a terminal of so many columns or for a text file, where each row is a line: the
+ * answer first, then the table.
+ */
+export function comparisonAsText(records: ComparedRecords, style: Style, columns?: number): string {
   return [
     heading(records, style),
     ...warnings(records).map((line) => style.warn(line)),
     answer(records, style),
-    table(records, style),
+    table(records, style, columns),
     absent(records),
   ]
     .filter((part) => part !== '')
@@ -83,18 +86,36 @@ const verdicts: Readonly<Record<Verdict, string>> = {
   'not-compared': 'not compared',
 };
 
-function table({ comparison }: ComparedRecords, style: Style): string {
+function table({ comparison }: ComparedRecords, style: Style, columns?: number): string {
   const { findings } = printableData(comparison);
   if (findings.length === 0) return 'No findings: the records hold too little.';
   const head = ['finding', 'before', 'after', 'difference ± U', 'E_n', 'allowed', 'verdict', ''];
-  const lines = alignTable(
-    [head, ...findings.map(cellsOf)],
-    ['left', 'right', 'right', 'left', 'right', 'left', 'left', 'left'],
+  const sides = ['left', 'right', 'right', 'left', 'right', 'left', 'left', 'left'] as const;
+  const wide = alignTable([head, ...findings.map(cellsOf)], sides).map((line) => `  ${line}`);
+  const room = columns === undefined || columns === 0 ? Infinity : columns;
+  const lines = wide.every(({ length }) => length <= room) ? wide : narrowTable(findings);
+  return [style.strong('Findings') + '   U = √(U₁² + U₂²), 95 %; E_n = Δ/U', ...lines].join('\n');
+}
+
+/** Where a row would not fit: what became of each finding, and below it the numbers, each with its name. */
+function narrowTable(findings: readonly Compared[]): readonly string[] {
+  const rows = findings.map(cellsOf);
+  const heads = alignTable(
+    rows.map(([finding = '', , , , , , verdict = '']) => [finding, verdict]),
+    ['left', 'left'],
   );
-  return [
-    style.strong('Findings') + '   U = √(U₁² + U₂²), 95 %; E_n = Δ/U',
-    ...lines.map((line) => `  ${line}`),
-  ].join('\n');
+  return rows.flatMap(
+    ([, before = '', after = '', difference = '', normalized = '', allowed = '', , note = ''], at) => {
+      const numbers = [
+        ['before', before],
+        ['after', after],
+        ['difference', difference],
+        ['E_n', normalized],
+        ['allowed', allowed],
+      ].flatMap(([name, value]) => (value === '' ? [] : [`${name} ${value}`]));
+      return [`  ${heads[at] ?? ''}`, `    ${[...numbers, ...(note === '' ? [] : [note])].join('; ')}`];
+    },
+  );
 }
 
 function cellsOf(compared: Compared): readonly string[] {

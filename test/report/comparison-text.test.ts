@@ -32,6 +32,17 @@ In neither record: limit-style.
     );
   });
 
+  it.each([80, 40])('names each number below its finding where %s columns do not hold a row', (columns) => {
+    const records = recordsOf(before, recordOf('20261201T080000Z-K1-acceptance', damaged));
+    const lines = comparisonAsText(records, plainStyle, columns).split('\n');
+    const at = lines.indexOf('  droop-resistance  CHANGED');
+    expect(lines[at + 1]).toBe(
+      '    before 18.00 mΩ; after 36.00 mΩ; difference +18.00 ± 0.28 mΩ (+100 %); E_n 64.94; allowed 20 %',
+    );
+    expect(lines[at - 2]).toBe('  earth-relation    changed');
+    expect(comparisonAsText(records, plainStyle, 200)).toBe(comparisonAsText(records, plainStyle));
+  });
+
   it('says in words when all is as it should be, and when not all can be told', () => {
     expect(text(before, recordOf('after', isolated))).toContain('\nAs it should be.\n');
     expect(text(before, recordOf('after', []))).toContain('\nNot all can be told.\n');

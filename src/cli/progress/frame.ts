@@ -76,11 +76,12 @@ function figureLines({ plan, figures }: RunSoFar, width: number, style: Style): 
     ...(hasThermometer ? [['temperature', shown(temperature, 'temperature')] as const] : []),
   ];
   const across = Math.max(1, Math.floor(width / cell));
+  const set = (text: string): string => text.padStart(Math.min(cell, width)).slice(0, width);
   const lines: string[] = [];
   for (let first = 0; first < cells.length; first += across) {
     const row = cells.slice(first, first + across);
-    lines.push(style.faint(row.map(([name]) => name.padStart(cell)).join('')));
-    lines.push(row.map(([, value]) => value.padStart(cell)).join(''));
+    lines.push(style.faint(row.map(([name]) => set(name)).join('')));
+    lines.push(row.map(([, value]) => set(value)).join(''));
   }
   return lines;
 }
