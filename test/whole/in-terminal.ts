@@ -11,18 +11,35 @@ export interface InTerminal {
   type(keys: string): void;
   /** All that came on the screen. */
   shown(): string;
+  /** The window is drawn larger or smaller. */
+  resize(columns: number, rows: number): Promise<void>;
   /** Settled when the terminal is closed, which it is when nobody has it any more. */
   readonly closed: Promise<unknown>;
 }
 
-/** A `railproof` on a terminal of its own: a pty of 200 columns, of which socat holds the other end. */
-export async function startInTerminal(args: readonly string[], file: string): Promise<InTerminal> {
+interface Terminal {
+  readonly columns?: number;
+  /** A terminal that does not say how high it is has no room for what is redrawn. */
+  readonly rows?: number;
+  readonly environment?: NodeJS.ProcessEnv;
+}
+
+/** A `railproof` on a terminal of its own, of 200 columns when nothing else is said: a pty of which socat holds the other end. */
+export async function startInTerminal(
+  args: readonly string[],
+  file: string,
+  { columns = 200, rows = 0, environment = {} }: Terminal = {},
+): Promise<InTerminal> {
   const command = [process.execPath, program, ...args].map((word) => `'${word}'`).join(' ');
-  writeFileSync(file, `stty cols 200\necho $$ > '${file}.pid'\nexec ${command}\n`);
+  writeFileSync(
+    file,
+    `stty cols ${columns} rows ${rows}\ntty > '${file}.tty'\necho $$ > '${file}.pid'\nexec ${command}\n`,
+  );
   const terminal = spawn('socat', ['-', `EXEC:sh ${file},pty,setsid,ctty,stderr`], {
     cwd: root,
     stdio: ['pipe', 'pipe', 'ignore'],
-    env: { ...process.env, NO_COLOR: '1' },
+    // Where these tests are run by a machine the program is not.
+    env: { ...process.env, CI: '', TERM: 'xterm', LC_ALL: 'C.UTF-8', NO_COLOR: '1', ...environment },
   });
   const closed = once(terminal, 'close');
   let seen = '';
@@ -35,6 +52,10 @@ export async function startInTerminal(args: readonly string[], file: string): Pr
     pid: Number(pidIn()),
     type: (keys) => terminal.stdin.write(keys),
     shown: () => seen,
+    resize: async (wide, high) => {
+      const tty = readFileSync(`${file}.tty`, 'utf8').trim();
+      await once(spawn('stty', ['-F', tty, 'cols', `${wide}`, 'rows', `${high}`]), 'exit');
+    },
     closed,
   };
 }

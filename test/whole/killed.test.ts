@@ -100,6 +100,7 @@ async function killAt(bench: string, procedure: string, moment: number, runs: st
   const run = await startInTerminal(
     ['run', procedure, '--bench', bench, '--module', 'fixtures/modules/K1.yaml', '--runs', runs, '--yes'],
     `${runs}.session`,
+    { rows: 24 },
   );
   try {
     await until(() => journalOf(runs).includes('"event":"input","state":"on"'));
@@ -155,9 +156,9 @@ function lookAtLoad(bench: string): Look {
   };
 }
 
-/** Voltage and current as the progress line showed them, in the order in which it did. */
+/** Voltage and current as the block showed them, in the order in which it did. */
 function shownIn(screen: string): readonly string[] {
-  return [...screen.matchAll(/ {2}(-?[\d.]+ [mµk]?V) {2}(-?[\d.]+ [mµn]?A) {2}/g)].map(
+  return [...screen.matchAll(/ {2}(-?[\d.]+ [mµk]?V) {2,}(-?[\d.]+ [mµn]?A) {2,}/g)].map(
     ([, voltage, current]) => `${voltage ?? ''} ${current ?? ''}`,
   );
 }

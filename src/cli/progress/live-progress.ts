@@ -108,7 +108,7 @@ export function liveProgress(
       soon();
     },
     progress(_, progress) {
-      run.figures = { ...run.figures, ...progress };
+      run.seen(progress);
       soon();
     },
     recorded(event) {

@@ -35,7 +35,7 @@ export class RunSoFar {
   readonly #steps: Growing<StepSoFar>[];
   #step = 0;
   #stepBegan: Seconds;
-  figures: Progress = {};
+  #figures: Progress = {};
 
   /** @param done how many steps, from the first, were done in the run that this one goes on with. */
   constructor(plan: Plan, clock: Clock, done: number) {
@@ -75,9 +75,20 @@ export class RunSoFar {
   stepBegan(number: number): void {
     this.#step = number;
     this.#stepBegan = this.#clock.now();
-    this.figures = {};
+    this.#figures = {};
     const step = this.#steps[number - 1];
     if (step !== undefined) step.state = 'now';
+  }
+
+  get figures(): Progress {
+    return this.#figures;
+  }
+
+  /** What was read last stays until something else was; a voltage that comes alone has no current beside it. */
+  seen(progress: Progress): void {
+    const { note, ...before } = this.#figures;
+    const kept = progress.voltage === undefined ? before : {};
+    this.#figures = { ...(note === undefined ? {} : { note }), ...kept, ...progress };
   }
 
   /** Whether the step under way ended with it. */

@@ -15,7 +15,7 @@ async function inRamp() {
   run.recorded(stepEnded(1));
   run.stepBegan(2);
   await clock.sleep(7);
-  run.figures = { setCurrent: 1.2, voltage: 15.1884, current: 1.1993 };
+  run.seen({ setCurrent: 1.2, voltage: 15.1884, current: 1.1993 });
   return run;
 }
 
@@ -59,7 +59,7 @@ describe('the block that shows a run', () => {
 
   it('says what a step does at the moment, how warm the module is, and that there was no reading', async () => {
     const run = await inRamp();
-    run.figures = { voltage: Number.NaN, current: 2, temperature: 41.23, note: 'soaking for 3 min' };
+    run.seen({ voltage: Number.NaN, current: 2, temperature: 41.23, note: 'soaking for 3 min' });
     const text = frame(run, undefined, window).join('\n');
     expect(text).toMatch(/now +2 {2}load-ramp +soaking for 3 min$/m);
     expect(text).toMatch(/temperature\n +- {2}no reading +2\.000 A {2}no reading +41\.23 °C$/m);
