@@ -1,3 +1,4 @@
+import type { DriverPart } from '../instrument/driver-part.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Volts } from '../quantity/quantity.js';
@@ -136,8 +137,18 @@ export class DisobeyedError extends RailproofError {
   readonly exitCode = exitCodes.instrument;
   readonly address: string;
 
-  constructor(address: string, what: string, advice: string, who: 'load' | 'source' = 'load') {
-    super(`the ${who} at ${address} ${what}`, { advice });
+  /** What of its driver it was told by, where that is likely what is wrong. */
+  readonly part: DriverPart | undefined;
+
+  constructor(
+    address: string,
+    what: string,
+    advice: string,
+    who: 'load' | 'source' = 'load',
+    told?: { readonly part: DriverPart; readonly complaint: unknown },
+  ) {
+    super(`the ${who} at ${address} ${what}`, { advice, cause: told?.complaint });
     this.address = address;
+    this.part = told?.part;
   }
 }

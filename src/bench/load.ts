@@ -138,7 +138,14 @@ export class Load {
     }));
     this.#onInput('off', confirmed);
     if (!confirmed) {
-      throw new DisobeyedError(this.address, 'was made safe and says that its input is on', switchOffByHand);
+      const part = { driver: this.instrument.driver.name, section: 'operations', name: 'make-safe' } as const;
+      throw new DisobeyedError(
+        this.address,
+        'was made safe and says that its input is on',
+        switchOffByHand,
+        'load',
+        { part, complaint },
+      );
     }
   }
 

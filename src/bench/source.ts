@@ -103,7 +103,10 @@ export class Source {
     const on = await this.isOn().catch((error: unknown) => {
       throw complaint ?? error;
     });
-    if (on) throw this.#disobeyed('was made safe and says that its output is on', switchOffByHand);
+    if (!on) return;
+    const part = { driver: this.instrument.driver.name, section: 'operations', name: 'make-safe' } as const;
+    const told = { part, complaint };
+    throw this.#disobeyed('was made safe and says that its output is on', switchOffByHand, told);
   }
 
   async isOn(): Promise<boolean> {
@@ -135,8 +138,12 @@ export class Source {
     return `its output is ${before === now ? 'still ' : ''}${now}`;
   }
 
-  #disobeyed(what: string, advice: string): DisobeyedError {
-    return new DisobeyedError(this.address, what, advice, 'source');
+  #disobeyed(
+    what: string,
+    advice: string,
+    told?: ConstructorParameters<typeof DisobeyedError>[4],
+  ): DisobeyedError {
+    return new DisobeyedError(this.address, what, advice, 'source', told);
   }
 }
 
