@@ -255,8 +255,16 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
 }
 
 const exitStatusHelp = `
-Exit status: 0 conforms, or nothing to judge, or may be built; 1 does not conform, or changed, or must not be built, or
-is recommended for less than the load asked for; 2 undecided, or nobody can tell; 3 stopped by a guard or by the
-operator; 64 usage; 65 bad file; 66 missing file; 69 instrument unreachable or lost, or the load not confirmed to be
-off; 70 a fault of ours; 74 the record or the output could not be written.
+Exit status:
+   0  conforms, or nothing to judge, or may be built
+   1  does not conform, or changed, or must not be built, or is
+      recommended for less than the load asked for
+   2  undecided, or nobody can tell
+   3  stopped by a guard or by the operator
+  64  usage
+  65  bad file
+  66  missing file
+  69  instrument unreachable or lost, or the load not confirmed to be off
+  70  a fault of ours
+  74  the record or the output could not be written
 `;
