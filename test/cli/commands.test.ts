@@ -29,7 +29,7 @@ describe('run', () => {
   it('--dry-run shows the plan and makes no record', async () => {
     const { status, stdout } = await railproof('run', 'real-limit', ...nursery, '--runs', runs, '--dry-run');
     expect(status).toBe(0);
-    expect(stdout).toMatch(/2 {2}load-ramp +21 points from 0 A to 100 % of rated-current/);
+    expect(stdout).toMatch(/2 {2}load-ramp +about 21 s {2}21 points from 0 A to 100 % of rated-current/);
     expect(stdout).toContain('cautions to acknowledge: mains, hot-surfaces, earth-link-removed');
     expect(stdout).toContain('never above 8 A (the bench), 18.75 V (the nameplate), 150 W (the bench)');
     expect(() => readdirSync(runs)).toThrow('ENOENT');

@@ -99,7 +99,7 @@ describe('railproof run --resume', () => {
     const before = readdirSync(runs);
     const { status, stdout, stderr } = await railproof('run', '--resume', broken, '--dry-run');
     expect(stderr).toContain('  done: step 1 of ');
-    expect(stdout).toMatch(/\n {2}1 {2}\S.* done\n {2}2 {2}\S.* about /);
+    expect(stdout).toMatch(/\n {2}1 {2}\S+ +done {2}\S.*\n {2}2 {2}\S+ +about \d/);
     const json = await railproof('run', '--resume', broken, '--dry-run', '--json');
     const plan = JSON.parse(json.stdout) as { steps: { done: boolean; seconds: number }[]; seconds: number };
     expect(plan.steps.map(({ done }) => done)).toEqual(plan.steps.map((_, index) => index === 0));
