@@ -43,6 +43,7 @@ export function liveProgress(
   let drawn: readonly string[] = [];
   let drawnAt = -Infinity;
   let isLineOpen = false;
+  let isSuspended = false;
   let pending: NodeJS.Timeout | undefined;
   let notice: string | undefined;
 
@@ -59,7 +60,7 @@ export function liveProgress(
     drawn = [];
   };
   const draw = (): void => {
-    if (isLineOpen) return;
+    if (isLineOpen || isSuspended) return;
     drawnAt = realClock.now();
     drawn = frame(run, notice, { columns: stream.columns, rows: stream.rows, ...look });
     block(drawn.join('\n'));
@@ -87,11 +88,14 @@ export function liveProgress(
   };
   const suspended = (): void => {
     takeAway();
+    // Once it goes on, what was due meanwhile comes before it hears of it.
+    isSuspended = true;
     process.off('SIGTSTP', suspended);
     // Nobody handles it any more, so this time it suspends.
     process.kill(process.pid, 'SIGTSTP');
   };
   const resumed = (): void => {
+    isSuspended = false;
     process.off('SIGTSTP', suspended).on('SIGTSTP', suspended);
     // Whatever was drawn before is not ours to take away: others have written below it.
     block.done();
