@@ -53,6 +53,7 @@ export const shell = `<!doctype html>
 <dl class="figures" id="figures"></dl>
 <p class="age" id="age"></p>
 <p class="note" id="note"></p>
+<p class="latest" id="latest" hidden></p>
 </section>
 <section class="curve" aria-labelledby="curve-heading">
 <h2 id="curve-heading">Curve</h2>
@@ -74,9 +75,8 @@ export const shell = `<!doctype html>
 <h2 id="cautions-heading">Cautions</h2>
 <ul class="cautions" id="cautions"></ul>
 </section>
-<section class="said" id="notices-section" aria-labelledby="notices-heading">
+<section class="said" id="notices-section" aria-labelledby="notices-heading" hidden>
 <h2 id="notices-heading">Notices</h2>
-<p class="none" id="no-notices">None so far.</p>
 <ol class="notices" id="notices" role="log" aria-labelledby="notices-heading"></ol>
 </section>
 </div>
@@ -89,5 +89,9 @@ export const shell = `<!doctype html>
 </html>
 `;
 
-/** The modules that the page is made of, beside those in `page`: from the room they stand in, as the address says. */
-export const sharedModules = ['view-state.js', 'quantity/printable.js', 'quantity/spoken-time.js'] as const;
+/** What the page imports beside `page` and the view's state: served as `/` and this name, from the same place in dist. */
+export const sharedModules = [
+  'quantity/printable.js',
+  'quantity/spoken-time.js',
+  'quantity/typed-as.js',
+] as const;

@@ -1,7 +1,8 @@
 import { PassThrough } from 'node:stream';
 import { describe, expect, it } from 'vitest';
 import { StoppedByOperator } from '../../src/run/stopped.js';
-import { TerminalOperator, typedAs } from '../../src/run/terminal-operator.js';
+import { typedAs } from '../../src/quantity/typed-as.js';
+import { TerminalOperator } from '../../src/run/terminal-operator.js';
 import { parseQuantity } from '../../src/quantity/parse-quantity.js';
 import type { Dimension } from '../../src/quantity/quantity.js';
 
