@@ -53,7 +53,7 @@ export async function matchOut(
 }
 
 /** A line is opened as its address says: no family's own settings are tried, there is one connection only. */
-function anyOf([first]: readonly Driver[]): Driver {
+export function anyOf([first]: readonly Driver[]): Driver {
   if (first === undefined) throw new Error('no driver comes with the program');
   const { sendEnd, replyEnd, gap, timeout } = first.wire;
   return { ...first, wire: { sendEnd, replyEnd, gap, timeout } };

@@ -169,6 +169,15 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     });
 
   command(
+    'new <kind> [file]',
+    'a bench, module or procedure file by a few questions, which says what each line means; finds the instruments',
+    'railproof new bench bench.yaml',
+  ).action(async (kind: string, file: string | undefined) => {
+    const { newFile } = await import('./new.js');
+    done(await newFile({ kind, file }, streams));
+  });
+
+  command(
     'check <file...>',
     'are these files right? Prints each mistake with its line and column',
     'railproof check fixtures/benches/nursery.yaml fixtures/modules/K1.yaml',

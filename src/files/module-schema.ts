@@ -5,10 +5,12 @@ import { headers } from './file-kind.js';
 import type { Module } from './module.js';
 import { found } from './plain-words.js';
 
+export const changeDate = z.iso
+  .date({ error: ({ input }) => `${found(input)}; a date is needed, year first: 2026-11-14` })
+  .meta({ description: 'The day of the change, year first.', examples: ['2026-11-14'] });
+
 const change = z.strictObject({
-  date: z.iso
-    .date({ error: ({ input }) => `${found(input)}; a date is needed, year first: 2026-11-14` })
-    .meta({ description: 'The day of the change, year first.', examples: ['2026-11-14'] }),
+  date: changeDate,
   what: line('What was done.').min(1),
 });
 
