@@ -1,10 +1,53 @@
 import { applied, type ViewMessage, type ViewState } from '../view-state.js';
+import { type Connection, follow, now } from './connection.js';
+import { showCurve } from './curve.js';
+import { place, write } from './dom.js';
+import { showEnding } from './ending.js';
+import { showFigures } from './figures.js';
+import { showLoad } from './load.js';
+import { showLost } from './lost.js';
+import { showCautions, showNotices } from './notes.js';
+import { showQuestion } from './question.js';
+import { lineOf } from './silence.js';
+import { showSteps } from './steps.js';
+import { showStop } from './stop.js';
+import { titleWords } from './wording.js';
 
-/** Follows the runner's stream of messages and keeps the state that they amount to. */
-const stream = new EventSource('/events');
 let state: ViewState | undefined;
-stream.addEventListener('message', (event: MessageEvent<string>) => {
-  const message = JSON.parse(event.data) as ViewMessage;
+/** When the figures last came; undefined while only those of before this page listened are known. */
+let readAt: number | undefined;
+const connection: Connection = follow(heard, shown);
+
+function heard(message: ViewMessage): void {
   if (message.kind === 'everything') state = message.state;
   else if (state !== undefined) state = applied(state, message);
-});
+  if (message.kind === 'figures') readAt = now();
+  if (message.kind === 'everything' || message.kind === 'step') readAt = undefined;
+  if (state?.ended !== undefined) connection.close();
+  shown();
+}
+
+/** All of the page follows from the state and from how long ago it was heard. */
+function shown(): void {
+  const line = lineOf({ ...connection.hearing(), ended: state?.ended !== undefined }, now());
+  document.title = `${titleWords(state, line)} · railproof`;
+  showLost(line, state !== undefined);
+  showLoad(state, line);
+  if (state === undefined) return;
+  showRun(state);
+  showEnding(state.ended);
+  showStop(state, line);
+  showQuestion(state);
+  showFigures(state, readAt === undefined ? undefined : now() - readAt, line);
+  showCurve(state);
+  showSteps(state);
+  showCautions(state.cautions);
+  showNotices(state.notices);
+}
+
+function showRun({ run }: ViewState): void {
+  const { procedure, bench, simulated, module, title, rated } = run;
+  write(place('kind'), `Live view · ${procedure} at ${bench}${simulated ? ' · simulated' : ''}`);
+  write(place('module'), module);
+  write(place('what'), `${title}. Nameplate: ${rated.voltage} V, ${rated.current} A.`);
+}

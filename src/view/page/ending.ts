@@ -1,0 +1,50 @@
+import type { ViewedEnd } from '../view-state.js';
+import { alarm, tell } from './announce.js';
+import { drawn, made, place, show, whenChanged, write } from './dom.js';
+import { type EndShown, endShown } from './wording.js';
+
+const signs: Readonly<Record<EndShown['look'], { readonly outline: string; readonly mark: string }>> = {
+  good: { outline: 'M4 30a26 26 0 1 0 52 0a26 26 0 1 0 -52 0z', mark: 'M18 31L27 40L43 21' },
+  bad: { outline: 'M19 4H41L56 19V41L41 56H19L4 41V19Z', mark: 'M16 30H44' },
+  unsure: { outline: 'M30 5L57 54H3Z', mark: 'M23 29a7 7 0 1 1 9.5 6.5c-2 .8 -2.5 2 -2.5 4M30 46v1' },
+  plain: { outline: 'M8 8H52V52H8Z', mark: 'M16 30H44' },
+};
+
+export const showEnding: (ended: ViewedEnd | undefined) => void = whenChanged((ended) => {
+  const section = place('ending');
+  show(section, ended !== undefined);
+  if (ended === undefined) return;
+  const { heading, look } = endShown(ended);
+  section.className = `ending ${look}`;
+  const { outline, mark } = signs[look];
+  place('ending-sign').replaceChildren(
+    drawn('path', { class: 'outline', d: outline }),
+    drawn('path', { class: 'mark', d: mark }),
+  );
+  write(place('ending-heading'), heading);
+  place('ending-text').replaceChildren(...words(ended));
+  const unsafe = ended.safety.filter(({ confirmed }) => !confirmed);
+  if (unsafe.length > 0) alarm(unsafe.map(({ text }) => text).join(' '));
+  else tell(`The run is over: ${heading}. ${ended.safety.map(({ text }) => text).join(' ')}`);
+});
+
+/** What a person must see to first, then what it came to, then where it is kept. */
+function words({ how, reason, answer, safety, record }: ViewedEnd): readonly HTMLElement[] {
+  const unsafe = safety.filter(({ confirmed }) => !confirmed);
+  const safe = safety.filter(({ confirmed }) => confirmed);
+  return [
+    ...unsafe.map(({ text }) => made('p', { class: 'safety unsafe' }, text)),
+    ...(unsafe.length > 0 && how !== 'completed'
+      ? [
+          made(
+            'p',
+            {},
+            `The run ${how === 'failed' ? 'failed' : 'was stopped'}${reason === null ? '' : `: ${reason}`}.`,
+          ),
+        ]
+      : []),
+    ...safe.map(({ text }) => made('p', { class: 'safety' }, text)),
+    ...answer.map((line) => made('p', {}, line)),
+    made('p', {}, 'Record: ', made('span', { class: 'folder' }, record)),
+  ];
+}

@@ -1,0 +1,49 @@
+import type { ViewState } from '../view-state.js';
+import { made, place, write, show } from './dom.js';
+import { type FigureShown, figuresShown } from './numbers.js';
+import type { Line } from './silence.js';
+import { ageWords } from './wording.js';
+import { clockTime } from '../../quantity/spoken-time.js';
+
+const list = place('figures');
+const age = place('age');
+const section = age.parentElement;
+const rows = new Map<string, { readonly value: HTMLElement; readonly set: HTMLElement }>();
+
+export function showFigures(state: ViewState, seconds: number | undefined, line: Line): void {
+  for (const figure of figuresShown(state)) showFigure(figure);
+  write(place('note'), state.ended === undefined ? (state.figures.note ?? '') : '');
+  const any = Object.keys(state.figures).some((name) => name !== 'note' && name !== 'setCurrent');
+  const { text, old } = ageWords(seconds, any, line);
+  write(age, text);
+  section?.classList.toggle('old', old);
+  section?.classList.toggle('aged', line.kind === 'lost');
+  const latest = state.notices.at(-1);
+  show(place('latest'), latest !== undefined);
+  if (latest !== undefined)
+    write(place('latest'), `Latest notice, at ${clockTime(latest.t)}: ${latest.text}`);
+}
+
+function showFigure({ name, unit, value, set }: FigureShown): void {
+  const row = rows.get(name) ?? begun(name);
+  const shown = value.kind === 'number' ? `${value.text} ${unit}` : value.words;
+  if (row.value.dataset['shown'] !== shown) {
+    row.value.dataset['shown'] = shown;
+    row.value.replaceChildren(
+      ...(value.kind === 'number'
+        ? [made('span', { class: 'number' }, value.text), ' ', made('span', { class: 'unit' }, unit)]
+        : [made('span', { class: 'words' }, value.words)]),
+    );
+  }
+  write(row.set, set ?? '');
+}
+
+function begun(name: string): { readonly value: HTMLElement; readonly set: HTMLElement } {
+  const first = name === 'Voltage' || name === 'Current';
+  const row = { value: made('dd'), set: made('dd', { class: 'set' }) };
+  list.append(
+    made('div', { class: first ? 'figure first' : 'figure' }, made('dt', {}, name), row.value, row.set),
+  );
+  rows.set(name, row);
+  return row;
+}

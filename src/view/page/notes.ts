@@ -1,0 +1,42 @@
+import { clockTime } from '../../quantity/spoken-time.js';
+import type { ViewedCaution, ViewedNotice, ViewState } from '../view-state.js';
+import { made, place, show, whenChanged } from './dom.js';
+import { cautionWords } from './wording.js';
+
+export const showCautions: (cautions: ViewState['cautions']) => void = whenChanged((cautions) => {
+  show(place('cautions-section'), cautions.length > 0);
+  place('cautions').replaceChildren(...cautions.map(caution));
+});
+
+function caution({ name, text, by }: ViewedCaution): HTMLElement {
+  return made(
+    'li',
+    {},
+    made('strong', {}, name.charAt(0).toUpperCase() + name.slice(1).replaceAll('-', ' ')),
+    ...text.split('\n').flatMap((line, index) => (index === 0 ? [line] : [made('br'), line])),
+    made('span', { class: by === undefined ? 'by waits' : 'by' }, cautionWords({ by })),
+  );
+}
+
+const shown = new Map<string, HTMLElement>();
+
+/** New ones are put at the end, so that a reader is told of those alone; what the state lets go goes here too. */
+export const showNotices: (notices: ViewState['notices']) => void = whenChanged((notices) => {
+  show(place('notices-section'), notices.length > 0);
+  const keys = new Set(notices.map(keyOf));
+  for (const [key, item] of shown) {
+    if (keys.has(key)) continue;
+    item.remove();
+    shown.delete(key);
+  }
+  for (const notice of notices) {
+    if (shown.has(keyOf(notice))) continue;
+    const item = made('li', {}, made('time', {}, `at ${clockTime(notice.t)}`), notice.text);
+    shown.set(keyOf(notice), item);
+    place('notices').append(item);
+  }
+});
+
+function keyOf({ t, text }: ViewedNotice): string {
+  return `${t} ${text}`;
+}

@@ -1,0 +1,144 @@
+import type { Question, ViewState } from '../view-state.js';
+import { alarm, tell } from './announce.js';
+import { send, type Sent } from './connection.js';
+import { made, place, show, write } from './dom.js';
+import { expectedWords } from './wording.js';
+
+const section = place('question');
+const heading = place('question-heading');
+const text = place('question-text');
+const form = place('question-form');
+const refused = place('question-error');
+const answered = place('answered');
+
+let open: Question | undefined;
+/** The question that was answered here. */
+let ours: number | undefined;
+let sending = false;
+
+/** What is asked stays as it is, with all that was typed, until another is asked. */
+export function showQuestion({ question, stopping, ended }: ViewState): void {
+  if (question?.id === open?.id) return;
+  const before = open;
+  const wasHere = section.contains(document.activeElement);
+  open = question;
+  sending = false;
+  show(section, question !== undefined);
+  if (before !== undefined) tellOfAnswer(before, stopping || ended !== undefined);
+  if (question === undefined) {
+    if (wasHere && ended === undefined) place('module').focus();
+    return;
+  }
+  lay(question);
+  if (before === undefined) show(answered, false);
+  attend(question, wasHere);
+}
+
+function tellOfAnswer({ id, heading: asked }: Question, stopped: boolean): void {
+  const how = stopped ? 'taken away, as the run ends' : 'answered at the terminal, or on another page';
+  const words = `“${asked}” was ${how}.`;
+  show(answered, ours !== id);
+  write(answered, words);
+  tell(ours === id ? 'The answer was taken.' : words);
+}
+
+/**
+ * The keyboard is led to the heading, never to a button, so that a key on its way answers nothing; and only where it
+ * is not busy elsewhere. A reader is told either way.
+ */
+function attend({ heading: asked }: Question, wasHere: boolean): void {
+  const { activeElement } = document;
+  const free =
+    activeElement === null || activeElement === document.body || /^H[12]$/.test(activeElement.tagName);
+  if (wasHere || free) heading.focus();
+  else alarm(`The runner asks: ${asked}`);
+}
+
+function lay(question: Question): void {
+  write(heading, question.heading);
+  const lines = question.text.split('\n').filter((line) => line.trim() !== '');
+  text.replaceChildren(
+    lines.length > 1
+      ? made('ol', {}, ...lines.map((line) => made('li', {}, line)))
+      : made('p', {}, lines[0] ?? ''),
+  );
+  show(refused, false);
+  form.replaceChildren(...controls(question));
+}
+
+function controls({ answer }: Question): readonly HTMLElement[] {
+  if (answer === 'yes') return [button('Yes, go on', 'yes', 'go'), button('No, stop here', 'no')];
+  if (answer === 'done') return [button('Done, go on', 'done', 'go')];
+  return [field(expectedWords({ answer }) ?? ''), button('Send', undefined, 'go')];
+}
+
+function button(words: string, value: string | undefined, look = ''): HTMLElement {
+  return made('button', { type: 'submit', class: look, ...(value !== undefined && { value }) }, words);
+}
+
+function field(expected: string): HTMLElement {
+  return made(
+    'div',
+    { class: 'field' },
+    made('label', { for: 'typed' }, 'Your answer'),
+    made('p', { class: 'hint', id: 'expected' }, expected),
+    made('input', {
+      ...{ id: 'typed', name: 'typed', type: 'text', maxlength: '400', required: '' },
+      ...{
+        autocomplete: 'off',
+        autocapitalize: 'off',
+        spellcheck: 'false',
+        'aria-describedby': 'expected question-error',
+      },
+    }),
+  );
+}
+
+form.addEventListener('submit', (event) => {
+  event.preventDefault();
+  if (open === undefined || sending) return;
+  const { submitter } = event;
+  const pressed = submitter instanceof HTMLButtonElement ? submitter.value : '';
+  void answer(open, pressed === '' ? typed().trim() : pressed);
+});
+
+function typed(): string {
+  return input()?.value ?? '';
+}
+
+function input(): HTMLInputElement | null {
+  return form.querySelector('input');
+}
+
+async function answer(question: Question, given: string): Promise<void> {
+  sending = true;
+  ours = question.id;
+  const { sent, words } = await send('/answer', { question: question.id, answer: given });
+  if (open?.id !== question.id) return;
+  sending = false;
+  if (sent === 'taken') return;
+  ours = undefined;
+  refuse(refusal(sent, words, expectedWords(question)));
+}
+
+function refusal(sent: Exclude<Sent, 'taken'>, words: string, expected: string | undefined): string {
+  switch (sent) {
+    case 'not-open':
+      return 'This is no longer asked: it was answered at the terminal, or on another page.';
+    case 'not-taken':
+      return words !== ''
+        ? words
+        : `That could not be taken.${expected === undefined ? '' : ` ${expected}.`}`;
+    case 'unreachable':
+      return 'The answer did not reach the runner. Answer at the terminal, or try again.';
+  }
+}
+
+function refuse(words: string): void {
+  write(refused, words);
+  show(refused, true);
+  alarm(words);
+  const box = input();
+  box?.setAttribute('aria-invalid', 'true');
+  box?.focus();
+}

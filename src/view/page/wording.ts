@@ -1,0 +1,155 @@
+import { spokenTime } from '../../quantity/spoken-time.js';
+import { typedAs } from '../../quantity/typed-as.js';
+import type { Question, ViewedCaution, ViewedEnd, ViewState } from '../view-state.js';
+import type { Line } from './silence.js';
+
+/** What is said of the line beside the load, at all times. */
+export function lineWords(line: Line): string {
+  switch (line.kind) {
+    case 'connecting':
+      return 'connecting…';
+    case 'live':
+      return 'followed live';
+    case 'lost':
+      return `no word for ${wholeSeconds(line.seconds)}`;
+    case 'over':
+      return 'the run is over';
+  }
+}
+
+/** The alarm of a lost runner: what is so, what may be so, what to do. Its count stands in the heading only. */
+export function lostWords(line: Line & { readonly kind: 'lost' }, known: boolean): readonly string[] {
+  return [
+    ...(known ? ['What stands below is old.'] : []),
+    ...reasons[line.why],
+    'The load may still be on. Look at the terminal.',
+    'The watchman switches the load off when the runner is gone. If in doubt cut the power by hand.',
+    ...(line.why === 'refused'
+      ? []
+      : ['This page goes on trying, and shows what is so as soon as it hears.']),
+  ];
+}
+
+const reasons: Readonly<Record<(Line & { kind: 'lost' })['why'], readonly string[]>> = {
+  silent: [],
+  unreachable: ['Nobody answers at this address: the program has ended, or the way to it is cut.'],
+  refused: [
+    'Who answers at this address does not know this page. Open the address again that the terminal shows; it opens one page once.',
+  ],
+};
+
+export function lostHeading({ seconds }: { readonly seconds: number }): string {
+  return `No word from the runner for ${wholeSeconds(seconds)}`;
+}
+
+function wholeSeconds(seconds: number): string {
+  return spokenTime(Math.max(1, Math.floor(seconds)));
+}
+
+/** How old the figures are; `old` where nobody must take them for what is so now. */
+export function ageWords(
+  seconds: number | undefined,
+  any: boolean,
+  line: Line,
+): { readonly text: string; readonly old: boolean } {
+  if (line.kind === 'over') return { text: any ? 'The last that was read.' : '', old: false };
+  if (!any) return { text: 'Nothing was read in this step yet.', old: line.kind === 'lost' };
+  const age = seconds === undefined ? 'some time ago' : `${spokenTime(Math.floor(seconds))} ago`;
+  if (line.kind === 'lost') return { text: `Old: read ${age}, and nothing was heard since.`, old: true };
+  if (seconds === undefined)
+    return { text: 'Read before this page listened; how long ago is not known.', old: true };
+  return seconds < 2 ? { text: 'Read just now.', old: false } : { text: `Read ${age}.`, old: seconds >= 10 };
+}
+
+/** The load's input in words; `undefined` where nobody knows. */
+export function loadWords(state: ViewState | undefined, line: Line): string {
+  const input = state?.input;
+  if (state?.ended?.safety.some(({ confirmed }) => !confirmed) === true && input !== 'off')
+    return 'Load may still be on';
+  if (input === undefined) return 'Load not read yet';
+  return line.kind === 'lost' ? `Load last read ${input}` : `Load ${input}`;
+}
+
+/** `1 min 5 s gone, about 2 min to go`. */
+export function timesWords({ elapsed, remaining, ended }: ViewState): string {
+  const gone = `${spokenTime(elapsed)} gone`;
+  return ended === undefined ? `${gone}, about ${spokenTime(remaining)} to go` : gone;
+}
+
+export type StepStanding = 'done' | 'now' | 'to-come' | 'broken-off' | 'not-done';
+
+/** Where a step stands, counted from 1. */
+export function standingOf(number: number, { step, ended }: Pick<ViewState, 'step' | 'ended'>): StepStanding {
+  if (ended?.how === 'completed' || number < step) return 'done';
+  if (number === step) return ended === undefined ? 'now' : 'broken-off';
+  return ended === undefined ? 'to-come' : 'not-done';
+}
+
+export const standingWords: Readonly<Record<StepStanding, string>> = {
+  done: 'done',
+  now: 'now',
+  'to-come': 'to come',
+  'broken-off': 'broken off',
+  'not-done': 'not done',
+};
+
+/** `Step 2 of 3: 11 points from 0 A to 4 A`. */
+export function stepWords({ step, run, ended }: ViewState): string {
+  const count = run.steps.length;
+  const now = run.steps[step - 1];
+  if (ended !== undefined)
+    return ended.how === 'completed' ? `All ${count} steps are done.` : `Ended in step ${step} of ${count}.`;
+  return now === undefined
+    ? `Before the first of ${count} steps.`
+    : `Step ${step} of ${count}: ${now.summary}`;
+}
+
+export function cautionWords({ by }: Pick<ViewedCaution, 'by'>): string {
+  switch (by) {
+    case undefined:
+      return 'Waits to be acknowledged.';
+    case 'operator':
+      return 'Acknowledged by the person at the bench.';
+    case '--yes':
+      return 'Acknowledged beforehand, with --yes.';
+    case 'simulated-operator':
+      return 'Acknowledged by the simulated operator.';
+  }
+}
+
+/** What is to be typed; undefined where a button is enough. */
+export function expectedWords({ answer }: Pick<Question, 'answer'>): string | undefined {
+  if (answer === 'yes' || answer === 'done') return undefined;
+  return answer === 'text' ? 'In your own words' : `In ${typedAs[answer]}`;
+}
+
+export interface EndShown {
+  readonly heading: string;
+  readonly look: 'good' | 'bad' | 'unsure' | 'plain';
+}
+
+/** How it came out. A load of which nobody knows outweighs whatever was measured. */
+export function endShown({ how, reason, outcome, safety }: ViewedEnd): EndShown {
+  const because = reason === null ? '' : `: ${reason}`;
+  if (safety.some(({ confirmed }) => !confirmed)) return { heading: 'Look at the bench first', look: 'bad' };
+  if (how === 'failed') return { heading: `Failed${because}`, look: 'bad' };
+  if (how === 'stopped') return { heading: `Stopped${because}`, look: 'unsure' };
+  return outcomes[outcome];
+}
+
+const outcomes: Readonly<Record<ViewedEnd['outcome'], EndShown>> = {
+  conforms: { heading: 'Conforms', look: 'good' },
+  'does-not-conform': { heading: 'Does not conform', look: 'bad' },
+  undecided: { heading: 'Undecided', look: 'unsure' },
+  'not-judged': { heading: 'Completed; nothing was judged', look: 'plain' },
+};
+
+/** Of the window, so that whoever looks at another sees it there. */
+export function titleWords(state: ViewState | undefined, line: Line): string {
+  if (state === undefined) return line.kind === 'lost' ? 'No word from the runner' : 'Live view';
+  const { module } = state.run;
+  if (line.kind === 'lost') return `No word · ${module}`;
+  if (state.ended !== undefined) return `${endShown(state.ended).heading} · ${module}`;
+  if (state.question !== undefined) return `? ${state.question.heading} · ${module}`;
+  return `${loadWords(state, line)} · ${module}`;
+}
