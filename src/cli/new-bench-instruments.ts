@@ -80,10 +80,11 @@ function askAddress(
   const isEnough = chosen.has('load');
   return questions.ask({
     ask: isEnough ? 'Where is the next instrument?' : 'Where is an instrument?',
-    why:
-      'On the network it is tcp://192.0.2.17:5025, as its own menu shows it; the usual port is 5025. At a serial ' +
-      `port it is serial:/dev/ttyUSB0?baud=9600${ports.length === 0 ? '' : ', or the number of a port above'}. It ` +
-      'is then asked who it is; nothing is told to it and nothing switched.',
+    why: isEnough
+      ? 'The meter makes the results better, the thermometer is for soaks, the source for modules that run from dc.'
+      : 'On the network it is tcp://192.0.2.17:5025, as its own menu shows it; the usual port is 5025. At a serial ' +
+        `port it is serial:/dev/ttyUSB0?baud=9600${ports.length === 0 ? '' : ', or the number of a port above'}. ` +
+        'It is then asked who it is; nothing is told to it and nothing switched.',
     ...(isEnough ? { usual: { value: undefined, words: 'there are no more' } } : {}),
     read: (answer) => {
       const port = /^\d{1,3}$/.test(answer) ? ports[Number(answer) - 1]?.address : answer;
@@ -183,16 +184,16 @@ function askDriver(
 ): Promise<{ readonly name: string; readonly driver: Driver }> {
   const ofRole = known.filter((each) => each.role === role);
   const proposed = ofRole.find(({ name }) => name === best) ?? (ofRole.length === 1 ? ofRole[0] : undefined);
-  const options = ofRole.map((driver) => ({ word: driver.name, means: driver.summary, value: driver }));
+  const widest = Math.max(...ofRole.map(({ name }) => name.length));
   return questions.ask({
     ask: 'Which driver speaks to it?',
-    listed: options.map(({ word, means }) => `${word}  ${means}`),
-    why: `A number, a name, or the path of a driver file of your own, from ${printable(shelf.relativeTo)} on.`,
+    why: 'A number, a name, or the path of a driver file of your own, from the folder of the bench file on.',
+    listed: ofRole.map(({ name, summary }) => `${name.padEnd(widest)}  ${summary}`),
     ...(proposed === undefined
       ? {}
       : { usual: { value: { name: proposed.name, driver: proposed }, words: proposed.name } }),
     read: async (answer) => {
-      const numbered = /^\d{1,3}$/.test(answer) ? options[Number(answer) - 1]?.word : undefined;
+      const numbered = /^\d{1,3}$/.test(answer) ? ofRole[Number(answer) - 1]?.name : undefined;
       const name = numbered ?? answer;
       const driver = (await readDriver(name, shelf)).value;
       if (driver.role === role) return { name, driver };

@@ -168,7 +168,7 @@ async function askLimits(
   const temperature = await limit(
     'temperature',
     'How warm may the case of a module become?',
-    'A soak beyond it stops. 90 degC at the outside of a case is a choice of ours, not a rule; mind the label, and what touches it.',
+    'A run stops where it gets warmer. 90 degC at the outside of a case is a choice of ours, not a rule; mind the label, and what touches it.',
     90,
   );
   return { voltage, current, power, temperature };
