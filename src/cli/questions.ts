@@ -70,6 +70,7 @@ export class Questions {
       else this.#waiting(line);
     });
     this.#lines.on('SIGINT', () => {
+      this.forget();
       this.#leave('stopped with Ctrl-C');
     });
     this.#lines.on('close', () => {
@@ -160,11 +161,15 @@ export class Questions {
     });
   }
 
+  /** What was pasted before the input ended is answered with first. */
   #line(): Promise<string> {
+    const typed = this.#typed.shift();
+    if (typed !== undefined) {
+      this.#output.write(`> ${printable(typed)}\n`);
+      return Promise.resolve(typed.trim());
+    }
     this.signal.throwIfAborted();
     this.#lines.prompt();
-    const typed = this.#typed.shift();
-    if (typed !== undefined) return Promise.resolve(typed.trim());
     return new Promise((resolve, reject) => {
       const left = (): void => {
         reject(this.signal.reason as Error);

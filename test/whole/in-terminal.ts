@@ -22,13 +22,15 @@ interface Terminal {
   /** A terminal that does not say how high it is has no room for what is redrawn. */
   readonly rows?: number;
   readonly environment?: NodeJS.ProcessEnv;
+  /** Where the program is started; the root of the repository when left out. */
+  readonly folder?: string;
 }
 
 /** A `railproof` on a terminal of its own, of 200 columns when nothing else is said: a pty of which socat holds the other end. */
 export async function startInTerminal(
   args: readonly string[],
   file: string,
-  { columns = 200, rows = 0, environment = {} }: Terminal = {},
+  { columns = 200, rows = 0, environment = {}, folder = root }: Terminal = {},
 ): Promise<InTerminal> {
   const command = [process.execPath, program, ...args].map((word) => `'${word}'`).join(' ');
   writeFileSync(
@@ -36,7 +38,7 @@ export async function startInTerminal(
     `stty cols ${columns} rows ${rows}\ntty > '${file}.tty'\necho $$ > '${file}.pid'\nexec ${command}\n`,
   );
   const terminal = spawn('socat', ['-', `EXEC:sh ${file},pty,setsid,ctty,stderr`], {
-    cwd: root,
+    cwd: folder,
     stdio: ['pipe', 'pipe', 'ignore'],
     // Where these tests are run by a machine the program is not.
     env: { ...process.env, CI: '', TERM: 'xterm', LC_ALL: 'C.UTF-8', NO_COLOR: '1', ...environment },
