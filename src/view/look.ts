@@ -27,19 +27,21 @@ h2{font-size:1.25rem;margin:0 0 .6rem}
 p{margin:.4rem 0;max-width:44rem}
 main p,main li,main dd,main td{unicode-bidi:isolate}
 :focus-visible{outline:3px solid var(--line-0);outline-offset:3px}
-h1:focus-visible,h2:focus-visible{outline-offset:.3rem}
+h1,.question h2,.ending h2{width:fit-content;max-width:100%}
+h1:focus-visible,h2:focus-visible{outline-offset:.12rem}
 .unseen{position:absolute;width:1px;height:1px;overflow:hidden;clip-path:inset(50%);white-space:nowrap}
 button,input{font:inherit;color:inherit;min-height:2.75rem;border-radius:0}
 button{cursor:pointer;padding:.45rem 1.2rem;border:2px solid var(--ink);background:var(--paper);font-weight:600}
 button:hover{background:var(--panel)}
 button[aria-disabled=true]{cursor:default;border-style:dashed}
 .strip{position:sticky;top:0;z-index:2;background:var(--paper);border-bottom:3px double var(--ink)}
-.strip-inner{display:flex;flex-wrap:wrap;align-items:center;justify-content:space-between;gap:.4rem 1rem;padding-block:.5rem}
-.load{display:flex;align-items:center;gap:.7rem;margin:0;min-width:0}
+.strip-inner{display:flex;flex-wrap:wrap;align-items:center;justify-content:space-between;gap:.4rem .8rem;padding-block:.5rem}
+.load{display:flex;align-items:center;gap:.7rem;margin:0;flex:1 1 8rem;min-width:0}
 .contact{width:3.6rem;height:1.8rem;flex:none}
 .contact path{fill:none;stroke:currentColor;stroke-width:2.6;stroke-linecap:round}
 .contact circle{fill:var(--paper);stroke:currentColor;stroke-width:2}
-.load-word{display:block;font-weight:700;font-size:1.2rem;line-height:1.2}
+.load-word{display:block;width:fit-content;font-weight:700;font-size:clamp(1.15rem,2.6vw,1.7rem);line-height:1.2}
+.load.on .load-word{background:var(--ink);color:var(--paper);padding:.05em .45em;margin-left:-.1em}
 .line{display:block;color:var(--soft);font-size:.85rem;line-height:1.3}
 .stop{display:flex;flex-direction:column;align-items:center;justify-content:center;min-width:8rem;min-height:3.4rem;
  padding:.3rem 1.2rem;border:3px solid var(--bad);color:var(--bad);line-height:1.2}
@@ -51,7 +53,7 @@ button[aria-disabled=true]{cursor:default;border-style:dashed}
 main{padding-block:1rem 0}
 .kind,.what,.age,.note,.times,.none,.legend{color:var(--soft)}
 .kind{margin:0;font-size:.9rem}
-.what{margin-top:0}
+.what{margin-top:0;max-width:60rem}
 .sheet{display:grid;gap:2.2rem;margin-top:1.6rem}
 .sheet>section{min-width:0}
 .figures{margin:0;border-top:1.5px solid var(--ink)}
@@ -59,14 +61,15 @@ main{padding-block:1rem 0}
  border-bottom:1px solid var(--rule)}
 .figure dt{font-size:.95rem;color:var(--soft)}
 .figure dd{margin:0;grid-column:2;text-align:right;white-space:nowrap;font-variant-numeric:tabular-nums lining-nums}
-.figure .number{font-size:clamp(2.1rem,11vw,3.2rem);line-height:1.15;font-weight:600;letter-spacing:-.01em}
-.figure.first .number{font-size:clamp(2.8rem,15vw,5.6rem)}
+.figure .number{font-size:clamp(2rem,10vw,3.2rem);line-height:1.15;font-weight:600;letter-spacing:-.01em}
+.figure.first .number{font-size:clamp(2.6rem,13.5vw,5.6rem)}
 .figure .unit{display:inline-block;width:2.2rem;margin-left:.35rem;text-align:left;font-size:1.35rem;color:var(--soft)}
-.figure .words{display:inline-block;font-size:1.25rem;line-height:2.2;white-space:normal}
-.figure .set{display:block;min-height:1.5em;color:var(--soft);white-space:normal}
+.figure .words{display:inline-block;font-size:1.25rem;line-height:1.3;white-space:normal}
+.figure .set{display:block;color:var(--soft);white-space:normal}
 .age{min-height:1.5em}
-.note:empty{display:none}
-.aged .figures{border:2px dashed var(--bad);padding-inline:.6rem;
+.note:empty,.set:empty{display:none}
+.latest{font-weight:600}
+.aged .figures{outline:2px dashed var(--bad);outline-offset:.3rem;
  background:repeating-linear-gradient(135deg,transparent 0 9px,var(--panel) 9px 11px)}
 .aged .age{color:var(--bad);font-weight:700}
 .old .age{color:var(--ink);font-weight:600}
@@ -133,14 +136,18 @@ ol,ul{margin:.4rem 0;padding-left:0;list-style:none;max-width:44rem}
 footer{margin-top:3rem;padding-block:1rem 2.5rem;color:var(--soft);font-size:.9rem;border-top:1px solid var(--rule)}
 @media (min-width:62rem){
 .sheet{grid-template-columns:minmax(0,1.65fr) minmax(18rem,1fr);column-gap:3.5rem}
-.now,.curve{grid-column:1}
-.now{grid-row:1}
-.curve{grid-row:2/span 3}
+.now{grid-column:1/-1}
+.curve{grid-column:1;grid-row:2/span 3}
 .way,.taken-note,.said{grid-column:2}
-.way{grid-row:1}
-.figures{display:grid;grid-template-columns:1fr 1fr;column-gap:2.2rem}
-.figure .number{font-size:3rem}
-.figure.first .number{font-size:clamp(4rem,7vw,6.2rem)}
+.said{align-self:start}
+.figures{display:grid;grid-template-columns:1.4fr 1.4fr 1fr 1fr;column-gap:2rem;border-bottom:1px solid var(--rule)}
+.figure{grid-template-columns:1fr;align-content:start;border-bottom:0;padding-block:.5rem}
+.figure dd{grid-column:1;text-align:left}
+.figure dd:nth-of-type(1){display:flex;align-items:baseline;white-space:nowrap}
+.figure dd:nth-of-type(1)::before{content:"";height:clamp(3.6rem,6.2vw,5.7rem)}
+.figure .number{font-size:clamp(2.2rem,3.4vw,3.2rem)}
+.figure.first .number{font-size:clamp(3.6rem,6.2vw,5.7rem)}
+.number{text-align:right}
 }
 @media (max-width:30rem){
 .strip-inner,main,footer{padding-inline:.9rem}

@@ -77,7 +77,7 @@ export const shell = `<!doctype html>
 </section>
 <section class="said" id="notices-section" aria-labelledby="notices-heading" hidden>
 <h2 id="notices-heading">Notices</h2>
-<ol class="notices" id="notices" role="log" aria-labelledby="notices-heading"></ol>
+<div role="log" aria-labelledby="notices-heading"><ol class="notices" id="notices"></ol></div>
 </section>
 </div>
 </main>

@@ -169,6 +169,7 @@ export function chartWords(points: readonly ViewedPoint[], run: Pick<ViewedRun, 
   const count = marks.length === 1 ? '1 point' : `${marks.length} points`;
   const fell = dropped === 0 ? '' : `, of which ${dropped} did not hold`;
   return `${chart.title}: ${count}${fell}. The last: ${pointCells(last, run)
+    .slice(1)
     .filter((cell) => cell !== '–')
     .join(', ')}.`;
 }

@@ -24,18 +24,25 @@ export function showFigures(state: ViewState, seconds: number | undefined, line:
     write(place('latest'), `Latest notice, at ${clockTime(latest.t)}: ${latest.text}`);
 }
 
-function showFigure({ name, unit, value, set }: FigureShown): void {
+function showFigure({ name, unit, digits, value, set }: FigureShown): void {
   const row = rows.get(name) ?? begun(name);
   const shown = value.kind === 'number' ? `${value.text} ${unit}` : value.words;
   if (row.value.dataset['shown'] !== shown) {
     row.value.dataset['shown'] = shown;
     row.value.replaceChildren(
       ...(value.kind === 'number'
-        ? [made('span', { class: 'number' }, value.text), ' ', made('span', { class: 'unit' }, unit)]
+        ? [numberOf(value.text, digits), ' ', made('span', { class: 'unit' }, unit)]
         : [made('span', { class: 'words' }, value.words)]),
     );
   }
   write(row.set, set ?? '');
+}
+
+/** A point takes a third of a digit, or a little more. */
+function numberOf(text: string, digits: number): HTMLElement {
+  const number = made('span', { class: 'number' }, text);
+  number.style.minWidth = `${digits + 0.4}ch`;
+  return number;
 }
 
 function begun(name: string): { readonly value: HTMLElement; readonly set: HTMLElement } {

@@ -49,5 +49,5 @@ function showRun({ run }: ViewState): void {
   const { procedure, bench, simulated, module, title, rated } = run;
   write(place('kind'), `Live view · ${procedure} at ${bench}${simulated ? ' · simulated' : ''}`);
   write(place('module'), module);
-  write(place('what'), `${title}. Nameplate: ${rated.voltage} V, ${rated.current} A.`);
+  write(place('what'), `${title}. Nameplate: ${rated.voltage}\u00a0V, ${rated.current}\u00a0A.`);
 }

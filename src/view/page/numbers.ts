@@ -4,6 +4,8 @@ import type { ViewState } from '../view-state.js';
 export interface FigureShown {
   readonly name: string;
   readonly unit: string;
+  /** How many digits it has as a rule; so wide it is kept. */
+  readonly digits: number;
   /** Digits, or why there are none. */
   readonly value:
     { readonly kind: 'number'; readonly text: string } | { readonly kind: 'none'; readonly words: string };
@@ -38,15 +40,16 @@ export function figuresShown({ run, figures }: Pick<ViewState, 'run' | 'figures'
   };
   const { volts, amperes, watts } = decimalsOf(run.rated);
   return [
-    { name: 'Voltage', unit: 'V', value: shown(voltage, volts, 'not read here') },
+    { name: 'Voltage', unit: 'V', digits: 5, value: shown(voltage, volts, 'not read here') },
     {
       name: 'Current',
       unit: 'A',
+      digits: 4,
       value: shown(current, amperes, 'not read here'),
       ...(setCurrent !== undefined && { set: `set to ${fixed(setCurrent, amperes)} A` }),
     },
-    { name: 'Power', unit: 'W', value: shown(product(voltage, current), watts, 'not known here') },
-    { name: 'Temperature', unit: '°C', value: shown(temperature, 1, 'not measured') },
+    { name: 'Power', unit: 'W', digits: 4, value: shown(product(voltage, current), watts, 'not known here') },
+    { name: 'Temperature', unit: '°C', digits: 3, value: shown(temperature, 1, 'not measured') },
   ];
 }
 

@@ -15,16 +15,22 @@ let open: Question | undefined;
 /** The question that was answered here. */
 let ours: number | undefined;
 let sending = false;
+/** The step in which the last question was answered; with it goes what was said of that. */
+let answeredIn = 0;
 
 /** What is asked stays as it is, with all that was typed, until another is asked. */
-export function showQuestion({ question, stopping, ended }: ViewState): void {
+export function showQuestion({ question, stopping, ended, step }: ViewState): void {
+  if (step !== answeredIn) show(answered, false);
   if (question?.id === open?.id) return;
   const before = open;
   const wasHere = section.contains(document.activeElement);
   open = question;
   sending = false;
   show(section, question !== undefined);
-  if (before !== undefined) tellOfAnswer(before, stopping || ended !== undefined);
+  if (before !== undefined) {
+    answeredIn = step;
+    tellOfAnswer(before, stopping || ended !== undefined);
+  }
   if (question === undefined) {
     if (wasHere && ended === undefined) place('module').focus();
     return;
@@ -37,7 +43,7 @@ export function showQuestion({ question, stopping, ended }: ViewState): void {
 function tellOfAnswer({ id, heading: asked }: Question, stopped: boolean): void {
   const how = stopped ? 'taken away, as the run ends' : 'answered at the terminal, or on another page';
   const words = `“${asked}” was ${how}.`;
-  show(answered, ours !== id);
+  show(answered, ours !== id && !stopped);
   write(answered, words);
   tell(ours === id ? 'The answer was taken.' : words);
 }
