@@ -71,8 +71,8 @@ main{padding-block:1rem 0}
 .latest{font-weight:600}
 .aged .figures{outline:2px dashed var(--bad);outline-offset:.3rem;
  background:repeating-linear-gradient(135deg,transparent 0 9px,var(--panel) 9px 11px)}
-.aged .age{color:var(--bad);font-weight:700}
 .old .age{color:var(--ink);font-weight:600}
+.aged .age,.silent .line{color:var(--bad);font-weight:700}
 figure{margin:0}
 .plot{height:min(22rem,60vh);min-height:15rem;width:100%}
 .plot:empty{display:none}

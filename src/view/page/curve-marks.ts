@@ -23,6 +23,9 @@ export const markPaths: Readonly<Record<MarkLook, MarkPath>> = {
   dropped: { line: '', sign: 'M13 2L23 12M23 2L13 12', series: 'k2', colour: 'bad', dash: [] },
 };
 
+/** Of more the line alone is drawn, or it would be a caterpillar. */
+const mostSigns = 60;
+
 /** Draws the marks in the order in which they were taken; what lies below the frame at its lower edge. */
 export function drawMarks(plot: uPlot, { marks, rated }: Chart, colour: (name: string) => string): void {
   const { ctx, bbox } = plot;
@@ -46,8 +49,11 @@ export function drawMarks(plot: uPlot, { marks, rated }: Chart, colour: (name: s
     ctx.stroke();
   }
   ctx.setLineDash([]);
-  for (const [index, mark] of marks.entries())
-    drawSign(ctx, at(mark), mark.look, ratio, colour, index === marks.length - 1);
+  for (const [index, mark] of marks.entries()) {
+    const isLast = index === marks.length - 1;
+    if (marks.length > mostSigns && mark.joined && !isLast) continue;
+    drawSign(ctx, at(mark), mark.look, ratio, colour, isLast);
+  }
   ctx.restore();
 }
 

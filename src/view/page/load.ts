@@ -23,6 +23,7 @@ const draw = whenChanged((contact: Contact) => {
 export function showLoad(state: ViewState | undefined, line: Line): void {
   write(place('load-word'), loadWords(state, line));
   write(place('line'), lineWords(line));
+  place('load').classList.toggle('silent', line.kind === 'lost');
   const known = line.kind === 'live' || line.kind === 'over' ? state?.input : undefined;
   place('load').classList.toggle('on', known === 'on');
   draw(known === undefined ? 'unknown' : known === 'on' ? 'closed' : 'open');

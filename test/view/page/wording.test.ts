@@ -1,0 +1,138 @@
+import { describe, expect, it } from 'vitest';
+import { parseQuantity } from '../../../src/quantity/parse-quantity.js';
+import { dimensions, type Dimension } from '../../../src/quantity/quantity.js';
+import {
+  ageWords,
+  endShown,
+  expectedWords,
+  lineWords,
+  loadWords,
+  lostHeading,
+  lostWords,
+  standingOf,
+  stepWords,
+  timesWords,
+  titleWords,
+} from '../../../src/view/page/wording.js';
+import type { ViewedEnd } from '../../../src/view/view-state.js';
+import { before } from './viewed.js';
+
+const live = { kind: 'live' } as const;
+const lost = { kind: 'lost', seconds: 4.6, why: 'silent' } as const;
+const over = { kind: 'over' } as const;
+const ended: ViewedEnd = {
+  how: 'completed',
+  reason: null,
+  answer: [],
+  outcome: 'conforms',
+  safety: [{ confirmed: true, text: 'The load is off; it was read back.' }],
+  record: 'runs/one',
+};
+const unsafe = { ...ended, safety: [{ confirmed: false, text: 'It could not be confirmed.' }] };
+
+describe('of a lost runner the page says', () => {
+  it('for how long nothing was heard, that all is old, that the load may be on, and what to do', () => {
+    expect(lostHeading(lost)).toBe('No word from the runner for 4 s');
+    const words = lostWords(lost, true).join(' ');
+    expect(words).toContain('What stands below is old.');
+    expect(words).toContain('The load may still be on. Look at the terminal.');
+    expect(words).toContain('If in doubt cut the power by hand.');
+    expect(words).not.toMatch(/\d/);
+  });
+
+  it('why, where that is known', () => {
+    expect(lostWords({ ...lost, why: 'unreachable' }, true).join(' ')).toContain('Nobody answers');
+    const refused = lostWords({ ...lost, why: 'refused' }, false).join(' ');
+    expect(refused).toContain('Open the address again that the terminal shows');
+    expect(refused).not.toContain('goes on trying');
+    expect(refused).not.toContain('What stands below');
+  });
+
+  it('of the load only what was read last, and that the figures are old', () => {
+    expect(loadWords({ ...before, input: 'on' }, lost)).toBe('Load last read on');
+    expect(ageWords(6.2, true, lost)).toEqual({
+      text: 'Old: read 6 s ago, and nothing was heard since.',
+      old: true,
+    });
+    expect(lineWords(lost)).toBe('no word for 4 s');
+  });
+});
+
+describe('the age of the figures', () => {
+  it('is said, and old from ten seconds on', () => {
+    expect(ageWords(0.4, true, live)).toEqual({ text: 'Read just now.', old: false });
+    expect(ageWords(4.9, true, live)).toEqual({ text: 'Read 4 s ago.', old: false });
+    expect(ageWords(130, true, live)).toEqual({ text: 'Read 2 min 10 s ago.', old: true });
+  });
+
+  it('is not made up where the page came later, and there is none without figures', () => {
+    expect(ageWords(undefined, true, live).text).toContain('not known');
+    expect(ageWords(3, false, live).text).toBe('Nothing was read in this step yet.');
+    expect(ageWords(300, true, over)).toEqual({ text: 'The last that was read.', old: false });
+  });
+});
+
+describe('the load', () => {
+  it('is on, off or not read', () => {
+    expect(loadWords({ ...before, input: 'on' }, live)).toBe('Load on');
+    expect(loadWords({ ...before, input: 'off' }, live)).toBe('Load off');
+    expect(loadWords(before, live)).toBe('Load not read yet');
+    expect(loadWords(undefined, live)).toBe('Load not read yet');
+  });
+
+  it('may still be on where the end could not confirm that it is off', () => {
+    expect(loadWords({ ...before, input: 'on', ended: unsafe }, over)).toBe('Load may still be on');
+  });
+});
+
+describe('the steps', () => {
+  it('are done, now or to come', () => {
+    const at = { ...before, step: 1 };
+    expect([1, 2].map((number) => standingOf(number, at))).toEqual(['now', 'to-come']);
+    expect(stepWords(at)).toBe('Step 1 of 2: voltage with the load off');
+    expect(stepWords(before)).toBe('Before the first of 2 steps.');
+  });
+
+  it('were broken off and not done where the run ended early, and all done where it was completed', () => {
+    const stopped = { ...before, step: 1, ended: { ...ended, how: 'stopped' as const } };
+    expect([1, 2].map((number) => standingOf(number, stopped))).toEqual(['broken-off', 'not-done']);
+    expect(stepWords(stopped)).toBe('Ended in step 1 of 2.');
+    expect([1, 2].map((number) => standingOf(number, { step: 2, ended }))).toEqual(['done', 'done']);
+  });
+
+  it('say what has gone and about what remains', () => {
+    expect(timesWords({ ...before, elapsed: 65, remaining: 26 })).toBe('1 min 5 s gone, about 26 s to go');
+    expect(timesWords({ ...before, elapsed: 65, ended })).toBe('1 min 5 s gone');
+  });
+});
+
+describe('the end', () => {
+  it('is what was decided, why it was stopped or failed, and before all that nobody knows of the load', () => {
+    expect(endShown(ended)).toEqual({ heading: 'Conforms', look: 'good' });
+    expect(endShown({ ...ended, outcome: 'does-not-conform' }).look).toBe('bad');
+    expect(endShown({ ...ended, how: 'stopped', reason: 'stopped on the page' }).heading).toBe(
+      'Stopped: stopped on the page',
+    );
+    expect(endShown({ ...ended, how: 'failed', reason: null })).toEqual({ heading: 'Failed', look: 'bad' });
+    expect(endShown(unsafe)).toEqual({ heading: 'Look at the bench first', look: 'bad' });
+  });
+});
+
+it('what is to be typed is said with an example that is taken as it stands', () => {
+  expect(expectedWords({ answer: 'yes' })).toBeUndefined();
+  expect(expectedWords({ answer: 'done' })).toBeUndefined();
+  expect(expectedWords({ answer: 'text' })).toBe('In your own words');
+  for (const dimension of Object.keys(dimensions) as Dimension[]) {
+    const example = expectedWords({ answer: dimension })?.split('for example ')[1] ?? '';
+    expect(() => parseQuantity(example, dimension), example).not.toThrow();
+  }
+});
+
+it('the title of the window tells whoever looks at another', () => {
+  expect(titleWords(undefined, live)).toBe('Live view');
+  expect(titleWords({ ...before, input: 'on' }, live)).toBe('Load on · K1');
+  expect(titleWords(before, lost)).toBe('No word · K1');
+  const question = { id: 1, heading: 'Wiring', text: 'so', answer: 'yes' as const };
+  expect(titleWords({ ...before, question }, live)).toBe('? Wiring · K1');
+  expect(titleWords({ ...before, ended }, over)).toBe('Conforms · K1');
+});
