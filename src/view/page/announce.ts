@@ -1,23 +1,26 @@
-import { place } from './dom.js';
 import { printable } from '../../quantity/printable.js';
-
-const alarms = place('alarm');
-const news = place('status');
+import { place } from './dom.js';
 
 /** Said at once, whatever is being read: a question, a lost runner, a load of which nobody knows. */
-export function alarm(text: string): void {
-  say(alarms, text);
-}
+export const alarm = speaking(place('alarm'));
 
 /** Said at the next pause. */
-export function tell(text: string): void {
-  say(news, text);
-}
+export const tell = speaking(place('status'));
 
-/** The same words a second time are no change unless something stood between. */
-function say(region: HTMLElement, text: string): void {
-  region.textContent = '';
-  setTimeout(() => {
-    region.textContent = printable(text);
-  }, 50);
+/**
+ * What comes together is said together, none instead of another. The same words a second time are no change unless
+ * something stood between.
+ */
+function speaking(region: HTMLElement): (text: string) => void {
+  let texts: readonly string[] = [];
+  return (text) => {
+    if (texts.length === 0) {
+      region.textContent = '';
+      setTimeout(() => {
+        region.textContent = printable(texts.join(' '));
+        texts = [];
+      }, 50);
+    }
+    texts = [...texts, text];
+  };
 }
