@@ -33,7 +33,10 @@ export interface Cap {
 type Derating = RunHeader['derating'];
 
 /** The lower one, where both the procedure and its soak name a limit. */
-export function temperatureLimit(derating: Derating, soaked: Soaked | undefined): Celsius | undefined {
+export function temperatureLimit(
+  derating: Derating,
+  soaked: Pick<Soaked, 'limit'> | undefined,
+): Celsius | undefined {
   const limits = [derating.temperatureLimit, soaked?.limit].filter((limit) => limit !== undefined);
   return limits.length === 0 ? undefined : Math.min(...limits);
 }

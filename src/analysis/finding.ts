@@ -33,6 +33,12 @@ export function findingNamed(findings: readonly Finding[], name: string): Findin
   return findings.find((finding) => finding.name === name);
 }
 
+/** The value of the finding of that name; undefined where it was not made, or is no number. */
+export function numberNamed(findings: readonly Finding[], name: string): number | undefined {
+  const value = findingNamed(findings, name)?.value;
+  return typeof value === 'number' ? value : undefined;
+}
+
 /**
  * Expanded uncertainty, 95 %. Of an interval that reaches further to one side, that side's: what is judged or
  * written by one number must not promise more than the interval does. Null where there is no interval.

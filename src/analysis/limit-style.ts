@@ -65,11 +65,7 @@ function overloadVerdict(
   const { dropout, openCircuit, droop = 0 } = found;
   if (dropout === undefined || openCircuit === undefined) return undefined;
   for (const step of stepsOf(evidence, 'dropout-search')) {
-    // One without an outcome was broken off: what ended it may be what its samples show.
-    const watched = step.points
-      .filter(({ phase, outcome }) => phase === 'overload' && outcome !== undefined)
-      .map(overloadOf);
-    const overload = watched.find(({ samples }) => samples.length >= fewestSamples);
+    const overload = overloadsOf(step).find(({ samples }) => samples.length >= fewestSamples);
     if (overload === undefined) continue;
     return { ...styleOf(step, overload, { dropout, openCircuit, droop }), step: step.step };
   }
@@ -83,9 +79,14 @@ interface Module {
 }
 
 /** What was watched of an overload: the samples in which both voltage and current could be read. */
-interface Overload {
+export interface Overload {
   readonly set: Amperes;
   readonly samples: PointEvidence['samples'];
+}
+
+export function overloadsOf({ points }: StepEvidence): readonly Overload[] {
+  // One without an outcome was broken off: what ended it may be what its samples show.
+  return points.filter(({ phase, outcome }) => phase === 'overload' && outcome !== undefined).map(overloadOf);
 }
 
 const fewestSamples = 3;

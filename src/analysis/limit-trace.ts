@@ -8,6 +8,8 @@ import { droopAlone, type Verdict } from './limit-verdict.js';
 /** What the points of a trace at constant voltage speak for. */
 export interface LimitTrace extends Verdict {
   readonly step: number;
+  /** All that could be read, in the order in which they were taken. */
+  readonly points: readonly TracedAt[];
   /** Past the limit, all of them steady, from the highest voltage down; empty where the module gives up instead. */
   readonly limited: readonly TracedPoint[];
 }
@@ -16,6 +18,7 @@ export interface LimitTrace extends Verdict {
 export interface TracedPoint {
   /** At the module; what the load held where the module gave nothing steady. */
   readonly voltage: Volts;
+  /** Of the samples in which it gave something; 0 where it never did. */
   readonly current: Amperes;
 }
 
@@ -24,6 +27,14 @@ type Gives = 'all' | 'some' | 'none';
 
 interface Traced extends TracedPoint {
   readonly gives: Gives;
+  /** How many samples there were, and in how many of them it gave what it was asked for. */
+  readonly samples: number;
+  readonly giving: number;
+}
+
+/** A point of a trace, and whether it still lies on the regulated line. */
+export interface TracedAt extends Traced {
+  readonly isRegulated: boolean;
 }
 
 /** Held at a voltage and found below this part of it, the module gives nothing. */
@@ -59,12 +70,14 @@ export function limitTraceOf(
   const { openCircuit, droop = 0 } = found;
   if (openCircuit === undefined) return undefined;
   for (const step of stepsOf(evidence, 'limit-trace')) {
-    const points = step.points.flatMap(tracedPoint);
+    const points = step.points
+      .flatMap(tracedPoint)
+      .map((point) => ({ ...point, isRegulated: isRegulated(point, { openCircuit, droop }) }));
     if (points.length === 0) continue;
-    const beyond = points.filter((point) => !isRegulated(point, { openCircuit, droop }));
+    const beyond = points.filter((point) => !point.isRegulated);
     const verdict = afterOverload(step) ?? styleOf(beyond, openCircuit, step);
     const holds = beyond.every(({ gives }) => gives === 'all');
-    return { ...verdict, step: step.step, limited: holds ? beyond : [] };
+    return { ...verdict, step: step.step, points, limited: holds ? beyond : [] };
   }
   return undefined;
 }
@@ -76,16 +89,12 @@ function tracedPoint({ phase, outcome, set, samples }: PointEvidence): readonly 
   const whole = samples.filter(({ voltage, current }) => Number.isFinite(voltage + current));
   const giving = whole.filter(({ voltage }) => voltage >= least);
   if (whole.length === 0) return [];
-  if (giving.length < whole.length) {
-    return [{ gives: giving.length === 0 ? 'none' : 'some', voltage: set.voltage, current: 0 }];
-  }
-  return [
-    {
-      gives: 'all',
-      voltage: mean(giving.map(({ voltage }) => voltage)),
-      current: mean(giving.map(({ current }) => current)),
-    },
-  ];
+  const counted = { samples: whole.length, giving: giving.length };
+  if (giving.length === 0) return [{ ...counted, gives: 'none', voltage: set.voltage, current: 0 }];
+  const current = mean(giving.map((sample) => sample.current));
+  return giving.length < whole.length
+    ? [{ ...counted, gives: 'some', voltage: set.voltage, current }]
+    : [{ ...counted, gives: 'all', voltage: mean(giving.map(({ voltage }) => voltage)), current }];
 }
 
 function isRegulated(

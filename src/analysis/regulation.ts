@@ -1,12 +1,12 @@
 import type { Amperes } from '../quantity/quantity.js';
 import type { LineFit } from '../statistics/line-fit.js';
-import { type BothWays, bothWays, bothWaysNote } from './both-ways.js';
+import { bothWaysNote } from './both-ways.js';
 import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
-import { lineOverCurrent } from './sound-line.js';
 import { moduleVoltageErrors, promised, promisedErrors } from './promised-errors.js';
 import { ratedOf } from './rated.js';
+import { lineAt, type RegulationLine } from './regulation-line.js';
 
 /** The line may be stretched by this part beyond its last point to reach the rated current. */
 const stretch = 1.05;
@@ -19,29 +19,30 @@ const stretch = 1.05;
  * at the load, the slope that was read is that of the module and the leads together. A ramp that went back
  * down gives the mean of both ways at each current.
  * @param points held, steady, below the onset of the limit; by rising current.
+ * @param line `regulationLine` of these points.
  */
 export function regulationFindings(
   evidence: Evidence,
   points: readonly CurvePoint[],
+  line: RegulationLine | undefined,
   openCircuitKnown: boolean,
 ): readonly Finding[] {
-  const ways = bothWays(points, moduleVoltageErrors(evidence.header).instrument.resolution);
-  const fit = lineOverCurrent(
-    ways.places.map((place) => place.current),
-    ways.places.map((place) => place.voltage),
-  );
-  if (fit === undefined) return [];
+  if (line === undefined) return [];
   const step = points[0]?.step ?? null;
-  const droop = droopFinding(evidence, fit, step, ways);
+  const droop = droopFinding(evidence, line, step);
   const reaches = (points.at(-1)?.current ?? 0) * stretch;
   return [
-    ...(openCircuitKnown ? [] : [interceptFinding(evidence, fit, step)]),
+    ...(openCircuitKnown ? [] : [interceptFinding(evidence, line, step)]),
     droop,
     ...regulationFinding(evidence, droop, reaches),
   ];
 }
 
-function droopFinding(evidence: Evidence, fit: LineFit, step: number | null, ways: BothWays): Finding {
+function droopFinding(
+  evidence: Evidence,
+  { fit, ways, scatter }: RegulationLine,
+  step: number | null,
+): Finding {
   const { instrument: voltage, leads } = moduleVoltageErrors(evidence.header);
   const current = promisedErrors(evidence.header, 'load', 'current');
   const droop = -fit.slope;
@@ -54,7 +55,7 @@ function droopFinding(evidence: Evidence, fit: LineFit, step: number | null, way
       {
         name: 'scatter about the line',
         kind: 'A',
-        uncertainty: scatter(fit, voltage.resolution) / Math.sqrt(fit.spreadX),
+        uncertainty: scatter / Math.sqrt(fit.spreadX),
         degreesOfFreedom: fit.degreesOfFreedom,
       },
       promised(`${voltage.of}, gain`, voltage.gain * slopeRead),
@@ -68,10 +69,10 @@ function droopFinding(evidence: Evidence, fit: LineFit, step: number | null, way
   );
 }
 
-function interceptFinding(evidence: Evidence, fit: LineFit, step: number | null): Finding {
+function interceptFinding(evidence: Evidence, line: RegulationLine, step: number | null): Finding {
+  const { fit } = line;
   const { instrument: voltage } = moduleVoltageErrors(evidence.header);
   const current = promisedErrors(evidence.header, 'load', 'current');
-  const share = Math.sqrt(1 / fit.points + fit.meanX ** 2 / fit.spreadX);
   return measured(
     'open-circuit-voltage',
     'voltage',
@@ -80,7 +81,7 @@ function interceptFinding(evidence: Evidence, fit: LineFit, step: number | null)
       {
         name: 'scatter about the line',
         kind: 'A',
-        uncertainty: scatter(fit, voltage.resolution) * share,
+        uncertainty: lineAt(line, 0).uncertainty,
         degreesOfFreedom: fit.degreesOfFreedom,
       },
       promised(`${voltage.of}, gain`, voltage.gain * fit.intercept),
@@ -121,9 +122,4 @@ function stillNote(fit: LineFit, slopeRead: number): string {
 /** Of the voltage as the instrument read it, before what the leads lose was added by calculation; in Ω. */
 function readSlope({ header: { bench } }: Evidence, fit: LineFit): number {
   return bench.voltageFrom === 'load-terminals' ? fit.slope - bench.leads.resistance : fit.slope;
-}
-
-/** Residuals smaller than the last digit say nothing about what the last digit hides. */
-function scatter(fit: LineFit, resolution: number): number {
-  return Math.max(fit.residualDeviation, resolution);
 }

@@ -15,6 +15,20 @@ export interface SettledTemperature {
   readonly left: Kelvins;
   /** Undefined where no change could be seen any more. */
   readonly timeConstant: TimeConstant | undefined;
+  /** How it gets there, from the first point that went into it. */
+  readonly way: Way;
+}
+
+/** T(t) = settled + (start − settled)·exp(−(t − from)/timeConstant); the mean from `from` on without a change. */
+export interface Way {
+  readonly from: Seconds;
+  readonly start: Celsius;
+}
+
+/** The temperature on its way, at a time from the way's beginning on. */
+export function onTheWay({ settled, timeConstant, way }: SettledTemperature, t: Seconds): Celsius {
+  if (timeConstant === undefined) return settled;
+  return settled + (way.start - settled) * Math.exp((way.from - t) / timeConstant.value);
 }
 
 export interface TimeConstant {
@@ -58,7 +72,7 @@ export function settledTemperature(
     if (best !== undefined) break;
     if (outcome.kind === 'already-settled') {
       const watched = (t.at(-1) ?? 0) - (t[0] ?? 0);
-      return watched < enough ? undefined : fromMean(outcome);
+      return watched < enough ? undefined : fromMean(outcome, t[0] ?? 0);
     }
     if (outcome.why === 'straight' || outcome.why === 'too-few-points') return undefined;
   }
@@ -91,14 +105,14 @@ function fromCurve({ t, y, fit }: Curve): SettledTemperature | undefined {
       uncertainty: fit.timeConstantUncertainty * wider,
       degreesOfFreedom,
     },
+    way: { from: startTime, start },
   };
 }
 
-function fromMean({
-  mean,
-  uncertainty,
-  degreesOfFreedom,
-}: Extract<SettlingOutcome, { kind: 'already-settled' }>): SettledTemperature {
+function fromMean(
+  { mean, uncertainty, degreesOfFreedom }: Extract<SettlingOutcome, { kind: 'already-settled' }>,
+  from: Seconds,
+): SettledTemperature {
   const expanded = coverageFactor(degreesOfFreedom) * uncertainty;
   return {
     settled: mean,
@@ -107,6 +121,7 @@ function fromMean({
     interval: [mean - expanded, mean + expanded],
     left: 0,
     timeConstant: undefined,
+    way: { from, start: mean },
   };
 }
 

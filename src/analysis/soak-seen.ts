@@ -13,6 +13,8 @@ export interface SoakSeen {
   readonly looks: readonly { readonly t: Seconds; readonly voltage: Volts }[];
   /** Where a thermometer read something; in the order of time. */
   readonly temperatures: readonly Celsius[];
+  /** When each of these was read. */
+  readonly times: readonly Seconds[];
   /** Before anything flowed. */
   readonly start: Start | undefined;
   readonly settling: SettledTemperature | undefined;
@@ -47,21 +49,16 @@ function soakSeen({ step, settings, points }: StepEvidence, held: readonly Point
   for (const point of held) current.add(point.current.mean);
   const warm = held.filter(({ temperature }) => temperature.count > 0);
   const temperatures = warm.map(({ temperature }) => temperature.mean);
+  const times = warm.map(({ t }) => t);
   const over = numberAt(settings, 'over') ?? usualWindow;
   return {
     step,
     current: current.mean,
     looks: held.map(({ t, moduleVoltage }) => ({ t, voltage: moduleVoltage.mean })),
     temperatures,
+    times,
     start: startOf(points),
-    settling:
-      temperatures.length === 0
-        ? undefined
-        : settledTemperature(
-            warm.map(({ t }) => t),
-            temperatures,
-            over,
-          ),
+    settling: temperatures.length === 0 ? undefined : settledTemperature(times, temperatures, over),
     limit: numberAt(settings, 'limit'),
     over,
   };

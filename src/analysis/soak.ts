@@ -26,7 +26,7 @@ const warmthLeft: Kelvins = 5;
  * a least value.
  */
 export function soakFindings(evidence: Evidence): readonly Finding[] {
-  const seen = governing(evidence);
+  const seen = governingSoak(evidence);
   if (seen === undefined) return [];
   const rise = riseOf(evidence, seen);
   return [
@@ -40,7 +40,7 @@ export function soakFindings(evidence: Evidence): readonly Finding[] {
 
 /** What a derating needs of the soak; undefined where none shows where the temperature goes. */
 export function soakedOf(evidence: Evidence): Soaked | undefined {
-  const seen = governing(evidence);
+  const seen = governingSoak(evidence);
   const rise = seen === undefined ? undefined : riseOf(evidence, seen);
   if (seen === undefined || rise === undefined || rise.finding.bound !== undefined) return undefined;
   return {
@@ -53,7 +53,7 @@ export function soakedOf(evidence: Evidence): Soaked | undefined {
 }
 
 /** The one at the highest current among those that tell where the temperature goes, or else among all. */
-function governing(evidence: Evidence): SoakSeen | undefined {
+export function governingSoak(evidence: Evidence): SoakSeen | undefined {
   return [...soaksSeen(evidence)].sort(
     (one, other) =>
       Number(other.settling !== undefined) - Number(one.settling !== undefined) ||
@@ -69,7 +69,7 @@ interface Rise {
 }
 
 function riseOf(evidence: Evidence, seen: SoakSeen): Rise | undefined {
-  const ambient = ambientOf(evidence, seen);
+  const ambient = ambientOfSoak(evidence, seen);
   const last = seen.temperatures.at(-1);
   if (ambient === undefined || last === undefined) return undefined;
   const { settling, step } = seen;
@@ -115,14 +115,15 @@ function lopsided(
   return [rise - Math.hypot(settled - low, expanded), rise + Math.hypot(high - settled, expanded)];
 }
 
-interface Ambient {
+/** The air that a rise is counted from, and who says so. */
+export interface Ambient {
   readonly temperature: Celsius;
   readonly from: 'bench' | 'start';
   readonly budget: readonly Contribution[];
   readonly note: readonly string[];
 }
 
-function ambientOf({ header, steps }: Evidence, seen: SoakSeen): Ambient | undefined {
+export function ambientOfSoak({ header, steps }: Evidence, seen: SoakSeen): Ambient | undefined {
   const given = header.bench.ambient;
   if (given !== undefined) {
     const budget = [promised('ambient', rectangular(given.uncertainty))];

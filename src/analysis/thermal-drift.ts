@@ -1,12 +1,35 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
+import type { Seconds } from '../quantity/quantity.js';
+import type { LineFit } from '../statistics/line-fit.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
 import { moduleVoltageErrors, promised } from './promised-errors.js';
 import type { SoakSeen } from './soak-seen.js';
 import { soundLine } from './sound-line.js';
 
-const hour = 3600;
+const hour: Seconds = 3600;
 const fewestLooks = 4;
+
+/** A soak's voltage at its end, as a straight line over hours from the first look that went into it. */
+export interface DriftLine {
+  readonly fit: LineFit;
+  readonly from: Seconds;
+  readonly to: Seconds;
+}
+
+/** Over the last window; over all where that holds too few looks. Undefined where all are too few, or at one time. */
+export function driftLine({ looks, over }: Pick<SoakSeen, 'looks' | 'over'>): DriftLine | undefined {
+  const to = looks.at(-1)?.t ?? 0;
+  const window = looks.filter(({ t }) => t >= to - over);
+  const lately = window.length < fewestLooks ? looks : window;
+  if (lately.length < fewestLooks) return undefined;
+  const from = lately[0]?.t ?? 0;
+  const fit = soundLine(
+    lately.map(({ t }) => (t - from) / hour),
+    lately.map(({ voltage }) => voltage),
+  );
+  return fit === undefined ? undefined : { fit, from, to };
+}
 
 /**
  * `thermal-drift`: how fast the module's voltage still moved at the end of a soak, in V/h: a straight line
@@ -15,20 +38,15 @@ const fewestLooks = 4;
  */
 export function driftFindings(
   { header }: Evidence,
-  { looks, over, step }: Pick<SoakSeen, 'looks' | 'over' | 'step'>,
+  seen: Pick<SoakSeen, 'looks' | 'over' | 'step'>,
 ): readonly Finding[] {
+  const { looks, step } = seen;
   const first = looks.at(0);
   const last = looks.at(-1);
   if (first === undefined || last === undefined) return [];
-  const window = looks.filter(({ t }) => t >= last.t - over);
-  const lately = window.length < fewestLooks ? looks : window;
-  if (lately.length < fewestLooks) return [];
-  const from = lately[0]?.t ?? 0;
-  const fit = soundLine(
-    lately.map(({ t }) => (t - from) / hour),
-    lately.map(({ voltage }) => voltage),
-  );
-  if (fit === undefined) return [];
+  const line = driftLine(seen);
+  if (line === undefined) return [];
+  const { fit, from } = line;
   const { instrument } = moduleVoltageErrors(header);
   const moved = last.voltage - first.voltage;
   const by = formatQuantity(Math.abs(moved), 'voltage', { significant: 2 });
