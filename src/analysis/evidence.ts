@@ -6,6 +6,7 @@ import type {
   Resumed,
   TimedEvent,
 } from '../record/journal-event.js';
+import type { Seconds } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { PointCollector, type PointEvidence } from './point-evidence.js';
 
@@ -19,6 +20,8 @@ export interface Evidence {
   readonly ended: Ended | undefined;
   readonly tripped: GuardTripped | undefined;
   readonly readings: number;
+  /** From the beginning of this run to the last event of its journal. */
+  readonly lasted: Seconds;
   /** The last that was heard of the load's input; undefined when nothing was. */
   readonly input: 'on' | 'off' | undefined;
   /** The runs that the first steps were taken over from, the first of them first. */
@@ -48,6 +51,7 @@ export class EvidenceCollector {
   #ended: Ended | undefined;
   #tripped: GuardTripped | undefined;
   #readings = 0;
+  #lasted = 0;
   #input: 'on' | 'off' | undefined;
   readonly #resumed: Resumed[] = [];
   #stepsDone = 0;
@@ -58,6 +62,7 @@ export class EvidenceCollector {
 
   add(event: TimedEvent): void {
     const step = this.#steps.at(-1);
+    this.#lasted = event.t;
     switch (event.event) {
       case 'reading':
         this.#readings += 1;
@@ -122,6 +127,7 @@ export class EvidenceCollector {
       ended: this.#ended,
       tripped: this.#tripped,
       readings: this.#readings,
+      lasted: this.#lasted,
       input: this.#input,
       resumed: this.#resumed,
       stepsDone: this.#stepsDone,

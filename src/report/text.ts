@@ -9,6 +9,7 @@ import { answer } from './answer.js';
 import { columnsOf } from './finding-text.js';
 import { inMinutes } from './in-minutes.js';
 import { printableData } from './printable.js';
+import { journalInWords, probabilityInWords } from './record-words.js';
 import { endedHow, type Result } from './result.js';
 import type { Style } from './style.js';
 import { takenOver, type TakenOverPart } from './taken-over.js';
@@ -181,7 +182,7 @@ function decisionsTable({ decisions }: Result, style: Style, columns?: number): 
     verdicts[outcome],
     finding,
     requirement,
-    [probability === null ? '' : `conformance probability ${percent(probability)}`, note]
+    [probability === null ? '' : `conformance probability ${probabilityInWords(probability)}`, note]
       .filter((part) => part !== '')
       .join('; '),
   ]);
@@ -191,27 +192,9 @@ function decisionsTable({ decisions }: Result, style: Style, columns?: number): 
   );
 }
 
-/** Never 100 % and never 0 %: nothing measured is that sure. */
-function percent(probability: number): string {
-  if (probability > 0.999) return 'above 99.9 %';
-  if (probability < 0.001) return 'below 0.1 %';
-  return `${(probability * 100).toFixed(1)} %`;
-}
-
 function footing({ header, evidence, integrity }: Result): string {
   const instruments = header.instruments.map(
     ({ role, identity, address, driver }) => `${role}: ${identity}, ${driver}, ${address}`,
   );
   return [...instruments, `${evidence.readings} readings; ${journalInWords(integrity)}`].join('\n');
-}
-
-function journalInWords(integrity: Result['integrity']): string {
-  switch (integrity.kind) {
-    case 'whole':
-      return 'journal whole, every seal holds';
-    case 'cut-off':
-      return `journal cut off after ${integrity.lines} whole lines`;
-    case 'damaged':
-      return `journal damaged, ${integrity.lines} lines believed`;
-  }
 }
