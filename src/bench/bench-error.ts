@@ -37,7 +37,8 @@ export class BeyondCeilingError extends RailproofError {
 
   constructor(asked: string, ceiling: string, setBy: string) {
     super(`${asked} was asked for and ${setBy} allows ${ceiling}`, {
-      advice: 'lower what the procedure asks, or use a bench that allows it',
+      advice:
+        'lower what the procedure asks, or use a bench that allows it; --dry-run shows every ceiling and who sets it',
     });
     this.setBy = setBy;
   }

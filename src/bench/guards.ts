@@ -78,7 +78,7 @@ function guardVoltage(of: string, volts: number, limits: GuardLimits): void {
       `the ${of} reads ${reading(volts, 'voltage')} and ${limits.voltage.setBy} allows ${ceilingText(limits.voltage, 'voltage')}`,
       limits.voltage.setBy === 'the nameplate'
         ? 'it is another module than its file says, or it does not regulate any more: unplug it'
-        : 'the module gives more than it may here',
+        : 'unplug the module, which gives more than it may here; --dry-run shows every ceiling and who sets it',
     );
   }
   if (volts < -limits.ratedVoltage / 50) {
@@ -95,7 +95,7 @@ function guardCurrent(of: string, amps: number, limits: GuardLimits): void {
   throw new GuardTrippedError(
     'over-current',
     `the ${of} reads ${reading(amps, 'current')} and ${limits.current.setBy} allows ${ceilingText(limits.current, 'current')}`,
-    'the load does not keep its set current',
+    'the load does not keep its set current: look at its panel, and walk through its driver with `railproof drivers --try`',
   );
 }
 

@@ -16,7 +16,10 @@ export class NotWholeError extends RailproofError {
       integrity.kind === 'damaged'
         ? `line ${integrity.line} of its journal: ${integrity.problem}`
         : 'its journal ends without an end';
-    super(`${run}: ${what}`, { advice: 'without --strict, what is whole is shown' });
+    super(`${run}: ${what}`, {
+      advice:
+        '`railproof analyse` without --strict shows what is whole; `railproof run --resume` goes on with a run that was broken off',
+    });
   }
 }
 

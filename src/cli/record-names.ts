@@ -20,7 +20,8 @@ export class NoRunsError extends RailproofError {
 
   constructor(folder: string, cause: unknown) {
     super(`${folder} can't be listed: there is no such folder`, {
-      advice: 'records are kept in ./runs unless `railproof run --runs <folder>` said otherwise',
+      advice:
+        'records are kept in ./runs unless `railproof run --runs <folder>` said otherwise; then name it: railproof runs <folder>',
       cause,
     });
   }

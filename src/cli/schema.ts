@@ -13,7 +13,7 @@ export class UnknownKindError extends RailproofError {
 
   constructor(kind: string) {
     super(`there is no kind of file called '${kind}'${didYouMean(kind, fileKinds)}`, {
-      advice: `the kinds are ${fileKinds.join(', ')}`,
+      advice: `the kinds are ${fileKinds.join(', ')}; for example: railproof schema bench`,
     });
   }
 }

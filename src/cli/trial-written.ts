@@ -22,8 +22,11 @@ export class TrialNotKeptError extends RailproofError {
       exists: 'this file is there already, and is not written over',
       unwritable: `it cannot be written: ${cause instanceof Error ? cause.message : String(cause)}`,
     };
-    const advice = reason === 'unwritable' ? undefined : 'give another name: --write my-load';
-    super(`${path}: ${words[reason]}`, { cause, ...(advice === undefined ? {} : { advice }) });
+    const advice =
+      reason === 'unwritable'
+        ? 'make room there, or name a place where it may be written: --write /tmp/my-load'
+        : 'give another name: --write my-load';
+    super(`${path}: ${words[reason]}`, { cause, advice });
     this.exitCode = reason === 'unwritable' ? exitCodes.inputOutput : exitCodes.usage;
     this.path = path;
   }

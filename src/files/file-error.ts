@@ -29,7 +29,11 @@ export class BadFileError extends RailproofError {
 
   constructor(problems: readonly FileProblem[], options: { advice?: string; cause?: unknown } = {}) {
     const sorted = [...problems].sort((one, other) => one.line - other.line || one.column - other.column);
-    super(sorted.map(problemLine).join('\n'), options);
+    super(sorted.map(problemLine).join('\n'), {
+      ...options,
+      advice:
+        options.advice ?? `mend it there; \`railproof check ${sorted[0]?.file ?? 'file.yaml'}\` looks again`,
+    });
     this.problems = sorted;
   }
 }
@@ -41,7 +45,12 @@ export class MissingFileError extends RailproofError {
   readonly path: string;
 
   constructor(path: string, reason: string, options: { advice?: string; cause?: unknown } = {}) {
-    super(`${path}: ${reason}`, options);
+    super(`${path}: ${reason}`, {
+      ...options,
+      advice:
+        options.advice ??
+        'look at the path, from the folder you are in; `railproof new` writes a bench, module or procedure file',
+    });
     this.path = path;
   }
 }

@@ -6,7 +6,7 @@ import { visible } from './visible.js';
 const nothingCame = {
   did: 'answer',
   advice:
-    'Is it switched on, is the cable in, is remote control enabled, are the driver and the line settings (baud, ends of line) right?',
+    'Is it switched on, is the cable in, is remote control enabled, are the driver and the line settings (baud, ends of line) right? "railproof drivers --match" asks it with every end of line.',
 };
 const notFinished = {
   did: 'finish its answer to',

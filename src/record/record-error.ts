@@ -52,7 +52,8 @@ export class BadRecordError extends RailproofError {
 
   constructor(path: string, problem: string) {
     super(`${path}: ${problem}`, {
-      advice: 'the record was changed or made by another version; keep it, and run again',
+      advice:
+        'the record was changed or made by another version: keep it, see what `railproof analyse` still shows, and run again',
     });
     this.path = path;
   }

@@ -41,7 +41,10 @@ export class PlanError extends RailproofError {
   readonly problems: readonly string[];
 
   constructor(problems: readonly string[]) {
-    super(problems.join('\n'), { advice: 'nothing was switched on' });
+    super(problems.join('\n'), {
+      advice:
+        'nothing was switched on; mend the procedure, the bench or the module file, and look again with --dry-run',
+    });
     this.problems = problems;
   }
 }

@@ -16,6 +16,8 @@ export class UnforeseenError extends RailproofError {
       `a fault of ours, please report it: ${cause instanceof Error ? (cause.stack ?? cause.message) : String(cause)}`,
       {
         cause,
+        advice:
+          'send along the record, where one was begun; with `railproof run --trace` it holds every byte too',
       },
     );
   }

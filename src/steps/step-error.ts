@@ -29,7 +29,11 @@ export class ModuleStaysOffError extends RailproofError {
       cycled
         ? 'the module stays off after an overload, even after its input was cycled'
         : 'the module stays off after an overload, and nobody is here to cycle its input',
-      { advice: 'do not use it before it is known why' },
+      {
+        advice:
+          'unplug it, wait until its capacitors are empty, a minute or so, and plug it in: one that latches off comes ' +
+          'back then. Do not use it before it is known why',
+      },
     );
   }
 }

@@ -198,7 +198,8 @@ describe('a plan is refused, at file, line and column, when', () => {
     await expect(planOf(steps, change)).rejects.toMatchObject({
       code: 'PLAN',
       exitCode: 65,
-      advice: 'nothing was switched on',
+      advice:
+        'nothing was switched on; mend the procedure, the bench or the module file, and look again with --dry-run',
       message,
     });
   });
