@@ -1,5 +1,6 @@
 import type { Ohms, Volts } from '../quantity/quantity.js';
-import type { BrokenLineFit } from '../statistics/broken-line-fit.js';
+import { type BrokenLineFit, predictBrokenLine } from '../statistics/broken-line-fit.js';
+import type { Place } from './both-ways.js';
 import { coldPoints, type CurvePoint, heldPoints, stepsOf } from './curve.js';
 import { type DropoutBracket, dropoutBracket, dropoutFindings } from './dropout.js';
 import type { Evidence } from './evidence.js';
@@ -23,6 +24,8 @@ export interface CurveSeen {
   /** Of these, those that a knee is looked for in. */
   readonly cold: readonly CurvePoint[];
   readonly knee: BrokenLineFit | undefined;
+  /** The line beyond it, from the knee to the last of these points; empty without a knee. */
+  readonly beyondKnee: readonly Place[];
   /** Of the steady ones, those of a ramp below the knee: the line goes through them. */
   readonly regulated: readonly CurvePoint[];
   readonly line: RegulationLine | undefined;
@@ -64,6 +67,15 @@ export function curveSeen(evidence: Evidence): CurveSeen {
   const trace = limitTraceOf(evidence, { openCircuit, droop });
   return {
     ...{ held, steady, cold, knee, regulated, line, bracket, trace, openCircuit, droop },
+    beyondKnee: knee === undefined ? [] : lineBeyond(knee, cold),
     findings: { idle, unsteady, regulation, dropout },
   };
+}
+
+function lineBeyond(knee: BrokenLineFit, cold: readonly CurvePoint[]): readonly Place[] {
+  const last = cold.at(-1)?.current ?? knee.breakpoint;
+  return [
+    { current: knee.breakpoint, voltage: knee.valueAtBreak },
+    { current: last, voltage: predictBrokenLine(knee, last) },
+  ];
 }

@@ -41,7 +41,8 @@ export function stepsOf(evidence: Evidence, kind: string): readonly StepEvidence
   return evidence.steps.filter((step) => step.kind === kind);
 }
 
-function isHeld(point: PointEvidence): boolean {
+/** Whether a point is one of the V-I curve: the module held the current that was set. */
+export function isHeld(point: PointEvidence): boolean {
   return (
     point.outcome === 'held' &&
     point.phase !== 'recovery' &&

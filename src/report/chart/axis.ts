@@ -40,12 +40,23 @@ export function axisOf(wish: AxisWish, [start, end]: readonly [number, number], 
 
 /** A domain that holds all values, with some air round them where it begins at none of them. */
 export function domainOf(values: readonly number[], least?: number): { from: number; to: number } {
-  const finite = values.filter(Number.isFinite);
-  const low = least ?? Math.min(...finite);
-  const high = Math.max(...finite);
+  const [lowest, high] = extremesOf(values);
+  const low = least ?? lowest;
   if (!Number.isFinite(low) || !Number.isFinite(high)) return { from: 0, to: 1 };
   const air = high > low ? (high - low) * 0.06 : Math.max(Math.abs(high) * 0.02, 1e-3);
   return { from: least ?? low - air, to: high + air };
+}
+
+/** Of those that are finite; turned round where there are none. Not by `Math.min(...)`, which can't take so many. */
+export function extremesOf(values: readonly number[]): readonly [lowest: number, highest: number] {
+  let lowest = Infinity;
+  let highest = -Infinity;
+  for (const value of values) {
+    if (!Number.isFinite(value)) continue;
+    if (value < lowest) lowest = value;
+    if (value > highest) highest = value;
+  }
+  return [lowest, highest];
 }
 
 function unitFor({ dimension, from, to }: AxisWish): Scale {

@@ -18,9 +18,10 @@ export interface Frame {
   readonly y: Axis;
 }
 
-const width = 560;
-/** Of what lies between the axes. */
-const plotHeight = 240;
+/** Of every chart, in units of the drawing. */
+export const chartWidth = 560;
+/** Of what lies between the axes, unless it is to be another. */
+const usualHeight = 240;
 const ticksBelow = 22;
 
 /**
@@ -34,15 +35,17 @@ export function frameOf(
     readonly above: (x: Axis, width: number) => number;
     readonly right: number;
     readonly below: number;
+    /** Between the axes. */
+    readonly height?: number;
   },
 ): Frame {
   const ticks = axisOf(wish.y, [1, 0], 5).ticks;
   const left = Math.max(...ticks.map(({ text }) => textWidth(text)), 0) + 12;
-  const x = axisOf(wish.x, [left, width - Math.max(room.right, 14)], 7);
-  const top = lineHeight + 10 + room.above(x, width);
-  const bottom = top + plotHeight;
+  const x = axisOf(wish.x, [left, chartWidth - Math.max(room.right, 14)], 7);
+  const top = lineHeight + 10 + room.above(x, chartWidth);
+  const bottom = top + (room.height ?? usualHeight);
   return {
-    width,
+    width: chartWidth,
     height: bottom + ticksBelow + lineHeight + 6 + room.below,
     x,
     y: axisOf(wish.y, [bottom, top], 5),

@@ -8,10 +8,13 @@ export interface VerticalMark {
   readonly at: number;
   /** A few words. */
   readonly label: string;
+  /** What it lies between; `only`: it is a stretch, and no place within it counts for more than another. */
+  readonly between?: { readonly from: number; readonly to: number; readonly only: boolean };
 }
 
 interface Flag {
   readonly place: number;
+  readonly between: VerticalMark['between'];
   readonly text: string;
   /** Of the label, from left to right. */
   readonly from: number;
@@ -27,25 +30,48 @@ export function roomForMarks(marks: readonly VerticalMark[], x: Axis, width: num
 
 /** The lines, each with its label above and to the right of it. */
 export function verticalMarks(marks: readonly VerticalMark[], { width, x, y }: Frame): readonly Markup[] {
-  return flags(marks, x, width).map(({ place, text, from, row }) => {
+  return flags(marks, x, width).map(({ place, text, from, row, between }) => {
     const baseline = y.end - 6 - row * lineHeight;
+    const foot = between?.only === true ? y.end : y.start;
     return element(
       'g',
       {},
-      element('line', { class: 'mark', x1: place, x2: place, y1: baseline + 3, y2: y.start }),
+      element('line', { class: 'mark', x1: place, x2: place, y1: baseline + 3, y2: foot }),
       element('text', { x: from, y: baseline }, text),
     );
   });
 }
 
+/** What the marks lie between, to be drawn behind all else. Never so narrow that it can't be seen. */
+export function markBands(marks: readonly VerticalMark[], { x, y }: Frame): readonly Markup[] {
+  return marks.flatMap(({ label, between }) => {
+    if (between === undefined) return [];
+    const [from, to] = [x.at(between.from), x.at(between.to)].sort((one, other) => one - other) as [
+      number,
+      number,
+    ];
+    const start = Math.max(x.start, from);
+    const width = Math.max(narrowest, Math.min(x.end, to) - start);
+    return [
+      element(
+        'rect',
+        { class: 'between', x: start, y: y.end, width, height: y.start - y.end },
+        element('title', {}, label),
+      ),
+    ];
+  });
+}
+
+const narrowest = 1.5;
+
 /** From right to left, each in the lowest row in which it neither meets another label nor is crossed by a line. */
 function flags(marks: readonly VerticalMark[], x: Axis, width: number): readonly Flag[] {
   const placed: Flag[] = [];
-  for (const { at, label } of [...marks].sort((one, other) => other.at - one.at)) {
+  for (const { at, label, between } of [...marks].sort((one, other) => other.at - one.at)) {
     const place = x.at(at);
     const text = cutToWidth(label, width - x.start);
     const from = Math.min(place - 1, width - textWidth(text));
-    const flag = { place, text, from, to: from + textWidth(text) };
+    const flag = { place, between, text, from, to: from + textWidth(text) };
     const rows = [...placed.keys(), placed.length];
     const row = rows.find((each) => placed.every((other) => !disturbs({ ...flag, row: each }, other)));
     placed.push({ ...flag, row: row ?? placed.length });

@@ -1,7 +1,196 @@
+import { type CurveSeen, curveSeen } from '../../analysis/curve-seen.js';
+import { findingNamed } from '../../analysis/finding.js';
+import { ratedOf } from '../../analysis/rated.js';
+import { lineAt, type RegulationLine } from '../../analysis/regulation-line.js';
+import { formatQuantity } from '../../quantity/format-quantity.js';
+import type { Amperes } from '../../quantity/quantity.js';
+import { roundedDown } from '../../quantity/rounded-down.js';
+import { extremesOf } from '../chart/axis.js';
+import type { ChartLine } from '../chart/drawn-line.js';
+import type { VerticalMark } from '../chart/marks.js';
+import { type ChartPoint, type Level, pointChart, type PointSort } from '../chart/point-chart.js';
 import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
+import { figure } from '../sheet/figure.js';
+import { droppedPoints, heldSorts, idleSort } from './curve-points.js';
+import { amps, foundInWords, rated, volts } from './in-words.js';
 
-/** The figure of V against I; undefined where the record has nothing for it. */
-export function curveFigure(_result: Result): Markup | undefined {
-  return undefined;
+/** A line and its interval are bent: so many places of it are reckoned. */
+const places = 61;
+/** The rated voltage is shown where it does not squeeze the curve into a corner. */
+const nearby = 0.05;
+
+/**
+ * V against I: all that was held, what was dropped, the line of regulation with its interval, and the currents that
+ * the record comes to. Undefined where nothing was held and no open circuit was read.
+ */
+export function curveFigure(result: Result): Markup | undefined {
+  const { evidence, header } = result;
+  const seen = curveSeen(evidence);
+  const held = [...heldSorts(evidence), idleSort(evidence)];
+  const plate = ratedOf(header);
+  const { axis, sorts, isBelow } = withDropped(held, droppedPoints(evidence), plate.voltage);
+  if (sorts.every(({ points }) => points.length === 0)) return undefined;
+  const lines = linesOf(seen);
+  const marks = [
+    ...currentMarks(result, seen),
+    { at: plate.current, label: `rated ${rated(plate.current, 'current')}` },
+  ];
+  const [, furthest] = extremesOf([
+    ...sorts.flatMap(({ points }) => points.map(({ x }) => x)),
+    ...marks.map(({ at }) => at),
+  ]);
+  const title =
+    header.circuit === 'single' ? 'Voltage over current' : 'Voltage of the whole over its current';
+  const said = inWords(result, seen, held);
+  return figure(
+    title,
+    pointChart({
+      id: 'curve',
+      title,
+      description: said.join(' '),
+      x: { label: 'Current', dimension: 'current', from: 0, to: furthest * 1.03 },
+      y: { label: 'Voltage', dimension: 'voltage' },
+      sorts,
+      lines,
+      levels: axis,
+      marks,
+    }),
+    caption(seen, isBelow),
+  );
+}
+
+/** Those that dropped so far that the rest would be a flat line beside them are drawn at the lower edge. */
+function withDropped(
+  held: readonly PointSort[],
+  dropped: readonly ChartPoint[],
+  ratedVoltage: number,
+): { readonly axis: readonly Level[]; readonly sorts: readonly PointSort[]; readonly isBelow: boolean } {
+  const [low, high] = extremesOf(held.flatMap(({ points }) => points.map(({ y }) => y)));
+  const isNear = ratedVoltage > low - nearby * high && ratedVoltage < high + nearby * high;
+  const axis = isNear ? [{ at: ratedVoltage, name: `rated ${rated(ratedVoltage, 'voltage')}` }] : [];
+  const floor = low - Math.max(nearby * high, high - low);
+  const isHigh = ({ y }: ChartPoint): boolean => !(y < floor);
+  const far = dropped
+    .filter((point) => !isHigh(point))
+    .map((point) => ({ ...point, y: Number.NEGATIVE_INFINITY }));
+  const sorts: readonly PointSort[] = [
+    ...held,
+    { name: 'dropped', shape: 'cross', look: 4, points: dropped.filter(isHigh) },
+    { name: 'dropped, to further down', shape: 'arrow', look: 4, points: far },
+  ];
+  return { axis, sorts, isBelow: far.length > 0 };
+}
+
+/** The line of regulation as far as its points go, and where there is a knee, the line beyond it. */
+function linesOf({ line, regulated, beyondKnee }: CurveSeen): readonly ChartLine[] {
+  const last = regulated.at(-1)?.current;
+  return [
+    ...(line === undefined || last === undefined ? [] : [fitted(line, 0, last)]),
+    ...(beyondKnee.length === 0
+      ? []
+      : [
+          {
+            name: 'beyond the knee',
+            xs: beyondKnee.map(({ current }) => current),
+            ys: beyondKnee.map(({ voltage }) => voltage),
+            look: 1,
+          },
+        ]),
+  ];
+}
+
+function fitted(line: RegulationLine, from: Amperes, to: Amperes): ChartLine {
+  const xs = Array.from({ length: places }, (_, index) => from + ((to - from) * index) / (places - 1));
+  const there = xs.map((current) => lineAt(line, current));
+  return {
+    name: 'fitted line',
+    xs,
+    ys: there.map(({ value }) => value),
+    band: {
+      low: there.map(({ value, expanded }) => value - expanded),
+      high: there.map(({ value, expanded }) => value + expanded),
+    },
+    look: 0,
+  };
+}
+
+function currentMarks({ findings }: Result, { bracket }: CurveSeen): readonly VerticalMark[] {
+  const mark = (name: string, label: (value: Amperes) => string): readonly VerticalMark[] => {
+    const finding = findingNamed(findings, name);
+    if (finding === undefined || typeof finding.value !== 'number') return [];
+    return [{ at: finding.value, label: label(finding.value) }];
+  };
+  const usable = findingNamed(findings, 'usable-current');
+  const onset = findingNamed(findings, 'limit-onset-current')?.interval ?? undefined;
+  const knee = mark('limit-onset-current', (value) => `limit begins ${amps(value)}`).map((each) =>
+    onset === undefined ? each : { ...each, between: { from: onset[0], to: onset[1], only: false } },
+  );
+  return [
+    ...mark('recommended-current', (value) => `recommended ${roundedDown(value, 'current')}`),
+    ...mark(
+      'usable-current',
+      (value) => `usable ${usable?.bound === 'least' ? 'at least ' : ''}${amps(value)}`,
+    ),
+    ...knee,
+    ...mark('unsteady-above-current', (value) => `swings above ${amps(value)}`),
+    ...(bracket === undefined
+      ? []
+      : [
+          {
+            at: (bracket.held + bracket.dropped) / 2,
+            label: `held ${amps(bracket.held)}, dropped ${amps(bracket.dropped)}`,
+            between: { from: bracket.held, to: bracket.dropped, only: true },
+          },
+        ]),
+  ];
+}
+
+function inWords(
+  { findings, header }: Result,
+  seen: CurveSeen,
+  held: readonly PointSort[],
+): readonly string[] {
+  const counted = held
+    .filter(({ points }) => points.length > 0)
+    .map(({ name, points }) => `${points.length} ${name}`);
+  const plate = ratedOf(header);
+  const found = (name: string, words: string): readonly string[] => {
+    const finding = findingNamed(findings, name);
+    return finding === undefined ? [] : [`${words} ${foundInWords(finding)}.`];
+  };
+  const { bracket } = seen;
+  return [
+    `Points: ${counted.join(', ') || 'none held'}.`,
+    ...found('open-circuit-voltage', 'Open circuit:'),
+    ...found('droop-resistance', 'The voltage falls by a droop of'),
+    ...found('limit-onset-current', 'The limit begins at'),
+    ...found('unsteady-above-current', 'The output swings above'),
+    ...(bracket === undefined
+      ? []
+      : [`It held ${amps(bracket.held)} and dropped out at ${amps(bracket.dropped)}.`]),
+    ...found('usable-current', 'Usable:'),
+    ...(() => {
+      const value = findingNamed(findings, 'recommended-current')?.value;
+      return typeof value === 'number' ? [`Recommended: ${roundedDown(value, 'current')}.`] : [];
+    })(),
+    `The label says ${rated(plate.voltage, 'voltage')} and ${rated(plate.current, 'current')}.`,
+  ];
+}
+
+function caption({ line, held }: CurveSeen, isBelow: boolean): string {
+  const said: string[] = [];
+  if (line !== undefined) {
+    const { fit } = line;
+    said.push(
+      `The line goes through ${fit.points} points: ${volts(fit.intercept)} − ` +
+        `${formatQuantity(-fit.slope, 'resistance', { significant: 4 })} · I. The shaded band holds the line with 95 %, ` +
+        `by the scatter of its points about it (Student's t, ${fit.degreesOfFreedom} degrees of freedom); what the ` +
+        'instruments may be wrong by comes on top and moves all of it alike.',
+    );
+  } else if (held.length > 0)
+    said.push('No line was laid through the points: a ramp of four currents at least would allow one.');
+  else said.push('No load was held.');
+  if (isBelow) said.push('Arrows: dropped, to a voltage below what is drawn.');
+  return said.join(' ');
 }

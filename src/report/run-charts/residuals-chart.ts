@@ -1,7 +1,106 @@
+import { curveSeen } from '../../analysis/curve-seen.js';
+import { type Residual, type ResidualsSeen, residualsSeen } from '../../analysis/residuals-seen.js';
+import { formatQuantity } from '../../quantity/format-quantity.js';
+import type { Volts } from '../../quantity/quantity.js';
+import type { ChartLine } from '../chart/drawn-line.js';
+import { pointChart, type PointSort } from '../chart/point-chart.js';
+import { thinned } from '../chart/thinned.js';
 import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
+import { figure } from '../sheet/figure.js';
+import { amps } from './in-words.js';
 
-/** The figure of what the readings differ by from the fitted line; undefined where the record has nothing for it. */
-export function residualsFigure(_result: Result): Markup | undefined {
-  return undefined;
+const title = 'What the points lie off the line';
+
+/** The residuals of the line of regulation over the current; undefined where there is no line. */
+export function residualsFigure({ evidence, header }: Result): Markup | undefined {
+  const seen = curveSeen(evidence);
+  const residuals = residualsSeen(header, seen);
+  if (residuals === undefined) return undefined;
+  const paired = seen.line?.ways.paired === true;
+  return figure(
+    title,
+    pointChart({
+      id: 'residuals',
+      title,
+      description: inWords(residuals),
+      x: { label: 'Current', dimension: 'current', from: 0 },
+      y: { label: 'Off the line', dimension: 'voltage' },
+      sorts: sortsOf(residuals),
+      lines: expectedBand(residuals.residuals),
+      levels: [{ at: 0, name: 'the line' }],
+    }),
+    caption(residuals, paired),
+  );
+}
+
+function sortsOf({ residuals }: ResidualsSeen): readonly PointSort[] {
+  const points = (wanted: (residual: Residual) => boolean): PointSort['points'] =>
+    residuals.filter(wanted).map(({ point, off, expected }) => ({
+      x: point.current,
+      y: off,
+      says: () =>
+        `${millivolts(off)} off the line at ${amps(point.current)}, step ${point.step}; ` +
+        (expected > 0 ? `95 % within ±${millivolts(expected)}` : 'its scatter is not known'),
+    }));
+  const isBack = ({ point }: Residual): boolean => point.phase === 'down';
+  return [
+    { name: 'on the way up', shape: 'circle', look: 0, points: points((each) => !isBack(each)) },
+    { name: 'on the way back', shape: 'triangle-down', look: 1, points: points(isBack) },
+  ];
+}
+
+/** About zero, as wide as each point's own readings promise. */
+function expectedBand(residuals: readonly Residual[]): readonly ChartLine[] {
+  const edge = thinned(
+    residuals.map(({ point, expected }) => ({ x: point.current, y: expected })),
+    100,
+  );
+  if (!edge.some(({ y }) => y > 0)) return [];
+  return [
+    {
+      name: 'readings alone',
+      xs: edge.map(({ x }) => x),
+      ys: edge.map(() => NaN),
+      band: { low: edge.map(({ y }) => -y), high: edge.map(({ y }) => y) },
+      look: 0,
+    },
+  ];
+}
+
+function inWords({ residuals }: ResidualsSeen): string {
+  const furthest = residuals.reduce<Residual | undefined>(
+    (most, each) => (most === undefined || Math.abs(each.off) > Math.abs(most.off) ? each : most),
+    undefined,
+  );
+  if (furthest === undefined) return 'No points.';
+  const within = residuals.filter(({ off, expected }) => Math.abs(off) <= expected).length;
+  const expected = residuals.some((each) => each.expected > 0)
+    ? ` ${within} lie within what their own readings promise with 95 %, about ±${millivolts(furthest.expected)}.`
+    : '';
+  return (
+    `${residuals.length} points. The furthest lies ${millivolts(furthest.off)} off the line, ` +
+    `at ${amps(furthest.point.current)}.${expected}`
+  );
+}
+
+function caption({ degreesOfFreedom, residuals }: ResidualsSeen, paired: boolean): string {
+  const ways = paired
+    ? ' The line goes through the mean of both ways at each current: where they differ, the module warms or something drifts.'
+    : '';
+  if (!residuals.some(({ expected }) => expected > 0)) {
+    return `Each point has one reading, so nothing tells how far off one may lie by chance.${ways}`;
+  }
+  const by =
+    degreesOfFreedom === undefined
+      ? 'by the last digit alone, as each has one reading'
+      : `by the scatter of its readings, pooled over all points (Student's t, ${degreesOfFreedom} degrees of freedom), and the last digit`;
+  return (
+    `Of 20 points about 19 lie in the shaded band where the line is straight and only readings scatter: 95 % for one ` +
+    `point, ${by}. What lies outside in a row is a bent line or a drift.${ways}`
+  );
+}
+
+function millivolts(value: Volts): string {
+  return formatQuantity(value, 'voltage', { significant: 2 });
 }

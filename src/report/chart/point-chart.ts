@@ -1,0 +1,194 @@
+import type { Dimension } from '../../quantity/quantity.js';
+import { element, type Markup, short } from '../page/markup.js';
+import { type AxisWish, domainOf, extremesOf } from './axis.js';
+import { type ChartLine, drawnBand, drawnLine, lookClass, looked } from './drawn-line.js';
+import { endNames, endOf, roomForNames } from './end-names.js';
+import { chartWidth, type ChartWords, clipped, type Frame, framed, frameOf } from './frame.js';
+import { markBands, roomForMarks, type VerticalMark, verticalMarks } from './marks.js';
+import { drawnKey, drawnShape, type KeyEntry, roomForKey, type Shape } from './shapes.js';
+import { thinned } from './thinned.js';
+
+/** Measured points, with what was laid through them, levels and places worth knowing, and a key of the shapes. */
+export interface PointChart extends ChartWords {
+  readonly x: PointAxis;
+  readonly y: PointAxis;
+  readonly sorts: readonly PointSort[];
+  readonly lines?: readonly ChartLine[];
+  readonly levels?: readonly Level[];
+  readonly marks?: readonly VerticalMark[];
+  readonly whiskers?: readonly Whisker[];
+  /** Between the axes, where it is to be another than usual. */
+  readonly height?: number;
+}
+
+export interface PointAxis {
+  readonly label: string;
+  readonly dimension: Dimension;
+  /** By what is drawn where left out. */
+  readonly from?: number;
+  readonly to?: number;
+}
+
+/** Points that are drawn alike. What lies beyond the axis of y is drawn at its edge. */
+export interface PointSort {
+  /** For the key. */
+  readonly name: string;
+  readonly shape: Shape;
+  readonly look: number;
+  readonly points: readonly ChartPoint[];
+  /** Whether they are joined in their order. */
+  readonly joined?: boolean;
+}
+
+export interface ChartPoint {
+  readonly x: number;
+  readonly y: number;
+  /** When pointed at; made for those only that are drawn. */
+  readonly says: () => string;
+}
+
+/** A horizontal line over the whole width, its name at the right. */
+export interface Level {
+  readonly at: number;
+  readonly name: string;
+}
+
+/** What something lies between, at one place of x. */
+export interface Whisker {
+  readonly x: number;
+  readonly low: number;
+  readonly high: number;
+  readonly look: number;
+  readonly says: string;
+}
+
+/** Of all sorts together: with their words about a hundred kilobytes. */
+const mostPoints = 400;
+
+export function pointChart(chart: PointChart): Markup {
+  const { marks = [], levels = [], whiskers = [] } = chart;
+  const lines = looked(chart.lines ?? []);
+  const sorts = drawnOf(chart.sorts);
+  const key = sorts.flatMap(keyEntry);
+  const frame = frameOf(axesOf({ ...chart, sorts }), {
+    above: (x, width) => roomForMarks(marks, x, width),
+    right: roomForNames([...lines, ...levels].map(({ name }) => name)),
+    below: roomForKey(key, chartWidth),
+    ...(chart.height === undefined ? {} : { height: chart.height }),
+  });
+  return framed(
+    chart,
+    frame,
+    markBands(marks, frame),
+    clipped(
+      chart,
+      lines.map((line) => drawnBand(line, frame)),
+      levels.map(({ at }) => levelLine(at, frame)),
+      sorts.map((sort) => joining(sort, frame)),
+      lines.map((line) => drawnLine(line, frame)),
+    ),
+    verticalMarks(marks, frame),
+    whiskers.map((whisker) => drawnWhisker(whisker, frame)),
+    sorts.map((sort) => drawnSort(sort, frame)),
+    endNames(
+      [
+        ...lines.map((line) => endOf(line, frame)),
+        ...levels.map(({ at, name }) => ({ name, x: frame.x.end, y: frame.y.at(at), class: 'level' })),
+      ],
+      frame,
+    ),
+    drawnKey(key, frame),
+  );
+}
+
+interface DrawnSort extends PointSort {
+  /** How many there were before they were thinned. */
+  readonly all: number;
+}
+
+/** Few enough of all sorts together, each sort's peaks among them. */
+function drawnOf(sorts: readonly PointSort[]): readonly DrawnSort[] {
+  const filled = sorts.filter(({ points }) => points.length > 0);
+  const all = filled.reduce((sum, { points }) => sum + points.length, 0);
+  const stretches = all <= mostPoints ? mostPoints : Math.floor(mostPoints / 2 / filled.length);
+  return filled
+    .map((sort) => ({ ...sort, points: thinned(sort.points, stretches), all: sort.points.length }))
+    .filter(({ points }) => points.length > 0);
+}
+
+function keyEntry({ name, shape, look, points, all }: DrawnSort): readonly KeyEntry[] {
+  const some = points.length < all ? `, ${points.length} of ${all} drawn` : '';
+  return [{ shape, look, says: `${name}${some}` }];
+}
+
+function axesOf({ x, y, sorts, lines = [], levels = [], whiskers = [] }: PointChart): {
+  readonly x: AxisWish;
+  readonly y: AxisWish;
+} {
+  const points = sorts.flatMap((sort) => sort.points);
+  const [left, right] = extremesOf([
+    ...points.map((point) => point.x),
+    ...lines.flatMap(({ xs }) => xs),
+    ...whiskers.map((whisker) => whisker.x),
+  ]);
+  const across = left <= right ? { from: left, to: right } : { from: 0, to: 1 };
+  const from = x.from ?? across.from;
+  const to = Math.max(x.to ?? across.to, from);
+  const up = domainOf(
+    [
+      ...points.map((point) => point.y),
+      ...lines.flatMap(({ ys, band }) => [...ys, ...(band?.low ?? []), ...(band?.high ?? [])]),
+      ...levels.map(({ at }) => at),
+      ...whiskers.flatMap(({ low, high }) => [low, high]),
+    ],
+    y.from,
+  );
+  return {
+    x: { ...x, from, to: to > from ? to : from + 1 },
+    y: { ...y, ...up, ...(y.to === undefined ? { round: true } : { to: y.to }) },
+  };
+}
+
+function levelLine(at: number, { x, y }: Frame): Markup {
+  const place = y.at(at);
+  return element('line', { class: 'mark', x1: x.start, x2: x.end, y1: place, y2: place });
+}
+
+function joining({ look, points, joined = false }: PointSort, frame: Frame): Markup | undefined {
+  if (!joined) return undefined;
+  const places = points.map((point) => placeOf(point, frame)).map(([x, y]) => `${short(x)} ${short(y)}`);
+  return element(
+    'g',
+    { class: lookClass(look) },
+    element('path', { class: 'joining', d: `M${places.join('L')}` }),
+  );
+}
+
+function drawnSort({ shape, look, points }: PointSort, frame: Frame): Markup {
+  return element(
+    'g',
+    { class: lookClass(look) },
+    points.map((point) => drawnShape(shape, placeOf(point, frame), point.says())),
+  );
+}
+
+function placeOf({ x, y }: ChartPoint, frame: Frame): readonly [number, number] {
+  return [frame.x.at(x), Math.min(frame.y.start, Math.max(frame.y.end, frame.y.at(y)))];
+}
+
+function drawnWhisker({ x, low, high, look, says }: Whisker, frame: Frame): Markup {
+  const place = frame.x.at(x);
+  const [bottom, top] = [frame.y.at(low), frame.y.at(high)];
+  return element(
+    'g',
+    { class: lookClass(look) },
+    element(
+      'path',
+      {
+        class: 'whisker',
+        d: `M${short(place - 5)} ${short(top)}h10m-5 0V${short(bottom)}m-5 0h10`,
+      },
+      element('title', {}, says),
+    ),
+  );
+}

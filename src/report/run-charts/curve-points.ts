@@ -1,0 +1,82 @@
+import type { Evidence, PointEvidence, StepEvidence } from '../../analysis/evidence.js';
+import { isHeld } from '../../analysis/curve.js';
+import type { ChartPoint, PointSort } from '../chart/point-chart.js';
+import { amps, stepInWords, volts } from './in-words.js';
+
+type Phase = PointEvidence['phase'];
+
+/** How the held points of a curve are told apart: by what they were taken for, which says how warm the module was. */
+const sorts = {
+  up: { name: 'on the way up', shape: 'circle', look: 0 },
+  down: { name: 'on the way back', shape: 'triangle-down', look: 1 },
+  search: { name: 'of a search', shape: 'diamond', look: 2 },
+  soak: { name: 'of a soak', shape: 'square', look: 3 },
+} as const;
+
+type Sort = keyof typeof sorts;
+
+const searching: readonly Phase[] = ['start', 'climb', 'halve', 'return', 'steadiness'];
+
+function sortOf(phase: Phase): Sort {
+  if (phase === 'down' || phase === 'soak') return phase;
+  return searching.includes(phase) ? 'search' : 'up';
+}
+
+/** All points that were held, of a soak too; every one with its values and the step that it is of. */
+export function heldSorts({ steps }: Evidence): readonly PointSort[] {
+  const points: Record<Sort, ChartPoint[]> = { up: [], down: [], search: [], soak: [] };
+  for (const step of steps) {
+    for (const point of step.points) {
+      if (!isHeld(point)) continue;
+      points[sortOf(point.phase)].push({
+        x: point.current.mean,
+        y: point.moduleVoltage.mean,
+        says: () => `held ${valuesOf(point)}; ${origin(step, point)}`,
+      });
+    }
+  }
+  return (Object.keys(sorts) as Sort[]).map((sort) => ({ ...sorts[sort], points: points[sort] }));
+}
+
+/** With the input off. */
+export function idleSort({ steps }: Evidence): PointSort {
+  const points = steps
+    .filter(({ kind }) => kind === 'open-circuit')
+    .flatMap((step) =>
+      step.points
+        .filter(({ moduleVoltage }) => moduleVoltage.count > 0)
+        .map((point): ChartPoint => {
+          const { mean } = point.moduleVoltage;
+          return { x: 0, y: mean, says: () => `open circuit: ${volts(mean)}; ${origin(step, point)}` };
+        }),
+    );
+  return { name: 'open circuit', shape: 'plus', look: 5, points };
+}
+
+/** Where the module dropped out, at the current that was set: what flowed then was not that of the curve. */
+export function droppedPoints({ steps }: Evidence): readonly ChartPoint[] {
+  return steps.flatMap((step) =>
+    step.points.flatMap((point) => {
+      const { outcome, phase, set, moduleVoltage } = point;
+      if (outcome !== 'dropped' || phase === 'recovery' || set.current === undefined) return [];
+      const y = moduleVoltage.count > 0 ? moduleVoltage.mean : Number.NEGATIVE_INFINITY;
+      const x = set.current;
+      const read = moduleVoltage.count > 0 ? valuesOf(point) : 'without a voltage';
+      return [{ x, y, says: () => `dropped at ${amps(x)}: ${read}; ${origin(step, point)}` }];
+    }),
+  );
+}
+
+function valuesOf({ moduleVoltage, current }: PointEvidence): string {
+  const flowed = current.count > 0 ? ` at ${amps(current.mean)}` : '';
+  return `${volts(moduleVoltage.mean)}${flowed}`;
+}
+
+function origin(
+  step: StepEvidence,
+  { point, moduleVoltage: { count, sampleDeviation } }: PointEvidence,
+): string {
+  const scatter =
+    sampleDeviation === undefined || count < 2 ? '' : `, which scatter by ${volts(sampleDeviation)}`;
+  return `${stepInWords(step)}, point ${point}; ${count === 1 ? '1 reading' : `${count} readings`}${scatter}`;
+}

@@ -1,0 +1,38 @@
+import type { StepEvidence } from '../../analysis/evidence.js';
+import type { Finding } from '../../analysis/finding.js';
+import { formatInterval, formatQuantity } from '../../quantity/format-quantity.js';
+import type { Amperes, Celsius, Dimension, Volts } from '../../quantity/quantity.js';
+
+export function amps(value: Amperes): string {
+  return formatQuantity(value, 'current', { significant: 4 });
+}
+
+/** To five digits: of 15 V that is a millivolt. */
+export function volts(value: Volts): string {
+  return formatQuantity(value, 'voltage', { significant: 5 });
+}
+
+export function degrees(value: Celsius): string {
+  return formatQuantity(Math.round(value * 10) / 10, 'temperature');
+}
+
+/** What a label says, and what labels add up to, without the digits that adding makes. */
+export function rated(value: number, dimension: Dimension): string {
+  return formatQuantity(Number(value.toPrecision(6)), dimension);
+}
+
+/** A finding's value with its interval: `5.30 A, 95 % from 5.28 A to 5.32 A`; at least, where it is a bound. */
+export function foundInWords({ value, interval, dimension, bound }: Finding): string {
+  if (typeof value !== 'number' || dimension === null) return String(value);
+  const least = bound === 'least' ? 'at least ' : '';
+  if (interval === null) return `${least}${formatQuantity(value, dimension, { significant: 4 })}`;
+  const { value: text, low, high, unit } = formatInterval(value, ...interval, dimension);
+  return low === ''
+    ? `${least}${text} ${unit}`
+    : `${least}${text} ${unit}, 95 % from ${low} to ${high} ${unit}`;
+}
+
+/** `step 2, load-ramp`. */
+export function stepInWords({ step, kind }: Pick<StepEvidence, 'step' | 'kind'>): string {
+  return `step ${step}, ${kind}`;
+}
