@@ -18,7 +18,7 @@ export interface LimitTrace extends Verdict {
 export interface TracedPoint {
   /** At the module; what the load held where the module gave nothing steady. */
   readonly voltage: Volts;
-  /** Of the samples in which it gave something; 0 where it never did. */
+  /** The mean; the largest seen where it gave something at times only, 0 where it never did. */
   readonly current: Amperes;
 }
 
@@ -90,11 +90,13 @@ function tracedPoint({ phase, outcome, set, samples }: PointEvidence): readonly 
   const giving = whole.filter(({ voltage }) => voltage >= least);
   if (whole.length === 0) return [];
   const counted = { samples: whole.length, giving: giving.length };
+  const currents = whole.map(({ current }) => current);
   if (giving.length === 0) return [{ ...counted, gives: 'none', voltage: set.voltage, current: 0 }];
-  const current = mean(giving.map((sample) => sample.current));
-  return giving.length < whole.length
-    ? [{ ...counted, gives: 'some', voltage: set.voltage, current }]
-    : [{ ...counted, gives: 'all', voltage: mean(giving.map(({ voltage }) => voltage)), current }];
+  if (giving.length < whole.length) {
+    return [{ ...counted, gives: 'some', voltage: set.voltage, current: Math.max(...currents) }];
+  }
+  const voltage = mean(whole.map((sample) => sample.voltage));
+  return [{ ...counted, gives: 'all', voltage, current: mean(currents) }];
 }
 
 function isRegulated(

@@ -63,8 +63,9 @@ function unitFor({ dimension, from, to }: AxisWish): Scale {
   const scales = scalesOf(dimension);
   const greatest = Math.max(Math.abs(from), Math.abs(to));
   const plain = scales.find(({ factor, shift }) => factor === 1 && shift >= 0) ?? scales[0];
-  // From half a unit on, the unit itself is what people expect: 0.8 A, not 800 mA.
-  const fitting = scales.findLast(({ factor, shift }) => greatest >= 0.5 * factor * 10 ** shift);
+  // From half a unit on, the unit itself is what people expect: 0.8 A, not 800 mA; but 100 min, not 1.67 h.
+  const enough = dimension === 'time' ? 2 : 0.5;
+  const fitting = scales.findLast(({ factor, shift }) => greatest >= enough * factor * 10 ** shift);
   const unit = dimension === 'ratio' ? scales[0] : (fitting ?? plain);
   if (unit === undefined) throw new RangeError(`no unit for ${dimension}`);
   return unit;

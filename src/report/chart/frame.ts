@@ -37,10 +37,12 @@ export function frameOf(
     readonly below: number;
     /** Between the axes. */
     readonly height?: number;
+    /** What the numbers at the left have at least, so that charts one below the other are in line. */
+    readonly left?: number;
   },
 ): Frame {
   const ticks = axisOf(wish.y, [1, 0], 5).ticks;
-  const left = Math.max(...ticks.map(({ text }) => textWidth(text)), 0) + 12;
+  const left = Math.max(...ticks.map(({ text }) => textWidth(text) + 12), room.left ?? 12);
   const x = axisOf(wish.x, [left, chartWidth - Math.max(room.right, 14)], 7);
   const top = lineHeight + 10 + room.above(x, chartWidth);
   const bottom = top + (room.height ?? usualHeight);

@@ -28,18 +28,22 @@ export function roomForMarks(marks: readonly VerticalMark[], x: Axis, width: num
   return Math.max(0, ...flags(marks, x, width).map(({ row }) => row + 1)) * lineHeight;
 }
 
-/** The lines, each with its label above and to the right of it. */
+/** The lines, each with its label above and beside it. */
 export function verticalMarks(marks: readonly VerticalMark[], { width, x, y }: Frame): readonly Markup[] {
-  return flags(marks, x, width).map(({ place, text, from, row, between }) => {
-    const baseline = y.end - 6 - row * lineHeight;
-    const foot = between?.only === true ? y.end : y.start;
-    return element(
-      'g',
-      {},
-      element('line', { class: 'mark', x1: place, x2: place, y1: baseline + 3, y2: foot }),
-      element('text', { x: from, y: baseline }, text),
-    );
-  });
+  const placed = flags(marks, x, width).map((flag) => ({
+    ...flag,
+    baseline: y.end - 6 - flag.row * lineHeight,
+  }));
+  return [
+    ...placed.map(({ place, between, baseline }) => {
+      const foot = between?.only === true ? y.end : y.start;
+      return element('line', { class: 'mark', x1: place, x2: place, y1: baseline + 3, y2: foot });
+    }),
+    // After the lines: of marks at one place the upper one's line may meet the lower one's label.
+    ...placed.map(({ text, from, baseline }) =>
+      element('text', { class: 'halo', x: from, y: baseline }, text),
+    ),
+  ];
 }
 
 /** What the marks lie between, to be drawn behind all else. Never so narrow that it can't be seen. */
@@ -67,10 +71,13 @@ const narrowest = 1.5;
 /** From right to left, each in the lowest row in which it neither meets another label nor is crossed by a line. */
 function flags(marks: readonly VerticalMark[], x: Axis, width: number): readonly Flag[] {
   const placed: Flag[] = [];
-  for (const { at, label, between } of [...marks].sort((one, other) => other.at - one.at)) {
+  const sorted = [...marks].sort(
+    (one, other) => other.at - one.at || textWidth(one.label) - textWidth(other.label),
+  );
+  for (const { at, label, between } of sorted) {
     const place = x.at(at);
     const text = cutToWidth(label, width - x.start);
-    const from = Math.min(place - 1, width - textWidth(text));
+    const from = Math.min(place + beside, width - textWidth(text));
     const flag = { place, between, text, from, to: from + textWidth(text) };
     const rows = [...placed.keys(), placed.length];
     const row = rows.find((each) => placed.every((other) => !disturbs({ ...flag, row: each }, other)));
@@ -79,8 +86,11 @@ function flags(marks: readonly VerticalMark[], x: Axis, width: number): readonly
   return placed;
 }
 
+/** From a line to its label. */
+const beside = 5;
+
 function disturbs(one: Flag, other: Flag): boolean {
-  const holds = (flag: Flag, place: number): boolean => flag.from - 6 < place && place < flag.to + 6;
+  const holds = (flag: Flag, place: number): boolean => flag.from - 3 < place && place < flag.to + 3;
   if (one.row === other.row) return one.from < other.to + 10 && other.from < one.to + 10;
   const [lower, higher] = one.row < other.row ? [one, other] : [other, one];
   return holds(lower, higher.place);

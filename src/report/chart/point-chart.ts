@@ -1,8 +1,8 @@
 import type { Dimension } from '../../quantity/quantity.js';
 import { element, type Markup, short } from '../page/markup.js';
 import { type AxisWish, domainOf, extremesOf } from './axis.js';
-import { type ChartLine, drawnBand, drawnLine, lookClass, looked } from './drawn-line.js';
-import { endNames, endOf, roomForNames } from './end-names.js';
+import { type ChartLine, drawnBand, drawnLine, lookClass, looked, type LookedLine } from './drawn-line.js';
+import { endNames, roomForNames } from './end-names.js';
 import { chartWidth, type ChartWords, clipped, type Frame, framed, frameOf } from './frame.js';
 import { markBands, roomForMarks, type VerticalMark, verticalMarks } from './marks.js';
 import { drawnKey, drawnShape, type KeyEntry, roomForKey, type Shape } from './shapes.js';
@@ -17,8 +17,8 @@ export interface PointChart extends ChartWords {
   readonly levels?: readonly Level[];
   readonly marks?: readonly VerticalMark[];
   readonly whiskers?: readonly Whisker[];
-  /** Between the axes, where it is to be another than usual. */
-  readonly height?: number;
+  /** Of the plot, and what is left and right of it at least, where charts stand one below the other. */
+  readonly size?: { readonly height: number; readonly left: number; readonly right: number };
 }
 
 export interface PointAxis {
@@ -62,20 +62,22 @@ export interface Whisker {
   readonly says: string;
 }
 
-/** Of all sorts together: with their words about a hundred kilobytes. */
-const mostPoints = 400;
+/** Of all sorts together: with their words some fifty kilobytes. */
+const mostPoints = 300;
 
 export function pointChart(chart: PointChart): Markup {
   const { marks = [], levels = [], whiskers = [] } = chart;
   const lines = looked(chart.lines ?? []);
   const sorts = drawnOf(chart.sorts);
-  const key = sorts.flatMap(keyEntry);
+  const key = [...sorts.map(keyEntry), ...lines.map(lineEntry)];
+  const { right = 0, ...size } = chart.size ?? {};
   const frame = frameOf(axesOf({ ...chart, sorts }), {
     above: (x, width) => roomForMarks(marks, x, width),
-    right: roomForNames([...lines, ...levels].map(({ name }) => name)),
+    right: Math.max(right, roomForNames(levels.map(({ name }) => name))),
     below: roomForKey(key, chartWidth),
-    ...(chart.height === undefined ? {} : { height: chart.height }),
+    ...size,
   });
+  const isBehind = ({ shape }: PointSort): boolean => shape === 'dot';
   return framed(
     chart,
     frame,
@@ -84,17 +86,19 @@ export function pointChart(chart: PointChart): Markup {
       chart,
       lines.map((line) => drawnBand(line, frame)),
       levels.map(({ at }) => levelLine(at, frame)),
+    ),
+    verticalMarks(marks, frame),
+    // Many small ones would hide the line that goes through them.
+    sorts.filter(isBehind).map((sort) => drawnSort(sort, frame)),
+    clipped(
+      chart,
       sorts.map((sort) => joining(sort, frame)),
       lines.map((line) => drawnLine(line, frame)),
     ),
-    verticalMarks(marks, frame),
     whiskers.map((whisker) => drawnWhisker(whisker, frame)),
-    sorts.map((sort) => drawnSort(sort, frame)),
+    sorts.filter((sort) => !isBehind(sort)).map((sort) => drawnSort(sort, frame)),
     endNames(
-      [
-        ...lines.map((line) => endOf(line, frame)),
-        ...levels.map(({ at, name }) => ({ name, x: frame.x.end, y: frame.y.at(at), class: 'level' })),
-      ],
+      levels.map(({ at, name }) => ({ name, x: frame.x.end, y: frame.y.at(at), class: 'level' })),
       frame,
     ),
     drawnKey(key, frame),
@@ -106,19 +110,27 @@ interface DrawnSort extends PointSort {
   readonly all: number;
 }
 
-/** Few enough of all sorts together, each sort's peaks among them. */
+/** Few enough of all sorts together, each sort's peaks among them; a sort of few points whole. */
 function drawnOf(sorts: readonly PointSort[]): readonly DrawnSort[] {
   const filled = sorts.filter(({ points }) => points.length > 0);
-  const all = filled.reduce((sum, { points }) => sum + points.length, 0);
-  const stretches = all <= mostPoints ? mostPoints : Math.floor(mostPoints / 2 / filled.length);
+  const [from, to] = extremesOf(filled.flatMap(({ points }) => points.map(({ x }) => x)));
+  const stretches = Math.floor(mostPoints / 2 / Math.max(1, filled.length));
   return filled
-    .map((sort) => ({ ...sort, points: thinned(sort.points, stretches), all: sort.points.length }))
+    .map((sort) => ({
+      ...sort,
+      points: thinned(sort.points, stretches, [from, to]),
+      all: sort.points.length,
+    }))
     .filter(({ points }) => points.length > 0);
 }
 
-function keyEntry({ name, shape, look, points, all }: DrawnSort): readonly KeyEntry[] {
+function keyEntry({ name, shape, look, points, all }: DrawnSort): KeyEntry {
   const some = points.length < all ? `, ${points.length} of ${all} drawn` : '';
-  return [{ shape, look, says: `${name}${some}` }];
+  return { shape, look, says: `${name}${some}` };
+}
+
+function lineEntry({ name, look }: LookedLine): KeyEntry {
+  return { shape: 'line', look, says: name };
 }
 
 function axesOf({ x, y, sorts, lines = [], levels = [], whiskers = [] }: PointChart): {
@@ -173,7 +185,8 @@ function drawnSort({ shape, look, points }: PointSort, frame: Frame): Markup {
 }
 
 function placeOf({ x, y }: ChartPoint, frame: Frame): readonly [number, number] {
-  return [frame.x.at(x), Math.min(frame.y.start, Math.max(frame.y.end, frame.y.at(y)))];
+  const place = Number.isFinite(y) ? frame.y.at(y) : y > 0 ? frame.y.end : frame.y.start;
+  return [frame.x.at(x), Math.min(frame.y.start, Math.max(frame.y.end, place))];
 }
 
 function drawnWhisker({ x, low, high, look, says }: Whisker, frame: Frame): Markup {

@@ -27,16 +27,19 @@ export function drawnShape(shape: Shape, [x, y]: readonly [number, number], says
   );
 }
 
-/** What a shape stands for. */
+/** What a shape, or a line of such a look, stands for. */
 export interface KeyEntry {
-  readonly shape: Shape;
+  readonly shape: Shape | 'line';
   readonly look: number;
   readonly says: string;
 }
 
 const left = 6;
-/** From a shape's middle to its words, and from there to the next shape. */
+/** From a shape's middle to its words. */
 const gap = 12;
+/** How long the sample of a line is, and how far its words are from its beginning. */
+const sample = 30;
+const next = 20;
 
 interface Placed extends KeyEntry {
   readonly text: string;
@@ -54,13 +57,16 @@ export function drawnKey(entries: readonly KeyEntry[], { width, height }: Frame)
   const top = height - roomForKey(entries, width);
   return placed(entries, width).map(({ shape, look, text, x, row }) => {
     const baseline = top + (row + 1) * (lineHeight + 2);
-    // An arrow stands upon its place, all others round it.
-    const middle = baseline - (shape === 'arrow' ? -2 : 4.5);
+    const drawn =
+      shape === 'line'
+        ? element('path', { class: 'line', d: `M${short(x - left)} ${short(baseline - 4.5)}h${sample}` })
+        : // An arrow stands upon its place, all others round it.
+          drawnShape(shape, [x, baseline - (shape === 'arrow' ? -2 : 4.5)]);
     return element(
       'g',
       { class: lookClass(look) },
-      drawnShape(shape, [x, middle]),
-      element('text', { x: x + gap, y: baseline }, text),
+      drawn,
+      element('text', { x: x + before(shape), y: baseline }, text),
     );
   });
 }
@@ -69,14 +75,18 @@ function placed(entries: readonly KeyEntry[], width: number): readonly Placed[] 
   let x = left;
   let row = 0;
   return entries.map((entry) => {
-    const text = cutToWidth(entry.says, width - left - gap);
-    const wide = gap + textWidth(text);
+    const text = cutToWidth(entry.says, width - left - before(entry.shape));
+    const wide = before(entry.shape) + textWidth(text);
     if (x > left && x + wide > width) {
       x = left;
       row += 1;
     }
     const place = { ...entry, text, x, row };
-    x += wide + gap + left;
+    x += wide + next;
     return place;
   });
+}
+
+function before(shape: KeyEntry['shape']): number {
+  return shape === 'line' ? sample : gap;
 }

@@ -123,6 +123,7 @@ svg .strong{font-weight:600}
 .chart .name{fill:var(--c);font-weight:600}
 .chart .lead-line{fill:none;stroke:var(--c);stroke-width:.8}
 .chart .mark{stroke:var(--ink);stroke-width:1;stroke-dasharray:3 3}
+.chart+.chart{margin-top:.9rem}
 .chart .between{fill:var(--ink);fill-opacity:.14}
 .chart .level{--c:var(--ink)}
 .chart .shape{fill:var(--paper);fill-opacity:.7;stroke:var(--c);stroke-width:1.5}

@@ -56,7 +56,7 @@ export function curveFigure(result: Result): Markup | undefined {
       levels: axis,
       marks,
     }),
-    caption(seen, isBelow),
+    caption(seen, { isBelow, isGroup: header.circuit !== 'single' }),
   );
 }
 
@@ -178,19 +178,28 @@ function inWords(
   ];
 }
 
-function caption({ line, held }: CurveSeen, isBelow: boolean): string {
-  const said: string[] = [];
-  if (line !== undefined) {
-    const { fit } = line;
-    said.push(
-      `The line goes through ${fit.points} points: ${volts(fit.intercept)} − ` +
-        `${formatQuantity(-fit.slope, 'resistance', { significant: 4 })} · I. The shaded band holds the line with 95 %, ` +
-        `by the scatter of its points about it (Student's t, ${fit.degreesOfFreedom} degrees of freedom); what the ` +
-        'instruments may be wrong by comes on top and moves all of it alike.',
-    );
-  } else if (held.length > 0)
-    said.push('No line was laid through the points: a ramp of four currents at least would allow one.');
-  else said.push('No load was held.');
-  if (isBelow) said.push('Arrows: dropped, to a voltage below what is drawn.');
-  return said.join(' ');
+function caption(seen: CurveSeen, drawn: { readonly isBelow: boolean; readonly isGroup: boolean }): string {
+  const said = drawn.isGroup && seen.line === undefined ? [] : [lineInWords(seen)];
+  return [
+    ...(drawn.isGroup ? ['Voltage and current are those of the whole.'] : []),
+    ...said,
+    ...(drawn.isBelow ? ['Arrows: dropped, to a voltage below what is drawn.'] : []),
+  ].join(' ');
+}
+
+function lineInWords({ line, regulated, held }: CurveSeen): string {
+  if (held.length === 0) return 'No load was held.';
+  const last = regulated.at(-1)?.current;
+  if (line === undefined || last === undefined) {
+    return 'No line was laid through the points: that takes a ramp of four currents at least.';
+  }
+  const { fit } = line;
+  const { expanded } = lineAt(line, last);
+  return (
+    `The line goes through ${fit.points} points: ${volts(fit.intercept)} − ` +
+    `${formatQuantity(-fit.slope, 'resistance', { significant: 4 })} · I. The shaded band holds the line itself with ` +
+    `95 %, by the scatter of its points about it (Student's t, ${fit.degreesOfFreedom} degrees of freedom): ` +
+    `±${formatQuantity(expanded, 'voltage', { significant: 2 })} at ${amps(last)}. What the instruments may be ` +
+    'wrong by comes on top, and moves all of it alike.'
+  );
 }

@@ -21,15 +21,18 @@ export function rated(value: number, dimension: Dimension): string {
   return formatQuantity(Number(value.toPrecision(6)), dimension);
 }
 
-/** A finding's value with its interval: `5.30 A, 95 % from 5.28 A to 5.32 A`; at least, where it is a bound. */
+/** A finding's value with its interval: `5.30 A, 95 % from 5.28 to 5.32 A`; at least, where it is a bound. */
 export function foundInWords({ value, interval, dimension, bound }: Finding): string {
   if (typeof value !== 'number' || dimension === null) return String(value);
   const least = bound === 'least' ? 'at least ' : '';
   if (interval === null) return `${least}${formatQuantity(value, dimension, { significant: 4 })}`;
-  const { value: text, low, high, unit } = formatInterval(value, ...interval, dimension);
-  return low === ''
-    ? `${least}${text} ${unit}`
-    : `${least}${text} ${unit}, 95 % from ${low} to ${high} ${unit}`;
+  return `${least}${betweenInWords(value, ...interval, dimension)}`;
+}
+
+/** `5.30 A, 95 % from 5.28 to 5.32 A`; the value alone where the interval has no width. */
+export function betweenInWords(value: number, from: number, to: number, dimension: Dimension): string {
+  const { value: text, low, high, unit } = formatInterval(value, from, to, dimension);
+  return low === '' ? `${text} ${unit}` : `${text} ${unit}, 95 % from ${low} to ${high} ${unit}`;
 }
 
 /** `step 2, load-ramp`. */

@@ -8,7 +8,7 @@ import type { Watts } from '../../quantity/quantity.js';
 import { extremesOf } from '../chart/axis.js';
 import type { ChartLine } from '../chart/drawn-line.js';
 import type { VerticalMark } from '../chart/marks.js';
-import { type ChartPoint, pointChart, type PointSort } from '../chart/point-chart.js';
+import { type ChartPoint, type Level, pointChart, type PointSort } from '../chart/point-chart.js';
 import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
 import { figure } from '../sheet/figure.js';
@@ -32,6 +32,7 @@ export function limitTraceFigure({ evidence, findings }: Result): Markup | undef
   const style = findingNamed(findings, 'limit-style');
   const power = style?.value === 'constant-power' ? meanPower(trace) : undefined;
   const top = Math.max(seen.openCircuit ?? 0, extremesOf(points.map(({ y }) => y))[1]);
+  const regulated = regulatedLine(seen, most);
   const title = style === undefined ? 'Past the limit' : `Past the limit: ${String(style.value)}`;
   return figure(
     title,
@@ -42,10 +43,8 @@ export function limitTraceFigure({ evidence, findings }: Result): Markup | undef
       x: { label: 'Current', dimension: 'current', from: 0, to: Math.max(most * 1.05, 0.1) },
       y: { label: 'Voltage', dimension: 'voltage', from: 0, to: top * 1.04 },
       sorts,
-      lines: [
-        ...regulatedLine(seen, most),
-        ...(power === undefined ? [] : [hyperbola(power, top, most * 1.05)]),
-      ],
+      lines: [...regulated, ...(power === undefined ? [] : [hyperbola(power, top, most * 1.05)])],
+      levels: regulated.length > 0 ? [] : openCircuit(seen),
       marks: shortCircuit(findings),
     }),
     caption(style, power),
@@ -82,7 +81,7 @@ function said(
   const step = trace === undefined ? '' : `; step ${trace.step}, limit-trace`;
   if (gives === 'none') return `held at ${volts(voltage)} it gave nothing, in ${samples} samples${step}`;
   if (gives === 'some') {
-    return `held at ${volts(voltage)} it gave ${amps(current)} in ${giving} of ${samples} samples, and nothing in the others${step}`;
+    return `held at ${volts(voltage)} it gave something in ${giving} of ${samples} samples, ${amps(current)} at most, and nothing in the others${step}`;
   }
   const where = isRegulated ? 'still regulated' : watts(voltage * current);
   return `${volts(voltage)} at ${amps(current)}, ${where}; ${samples} samples${step}`;
@@ -110,6 +109,10 @@ function regulatedLine({ openCircuit, droop }: CurveSeen, most: number): readonl
   if (openCircuit === undefined || droop === undefined) return [];
   const xs = [0, most];
   return [{ name: 'regulated line', xs, ys: xs.map((current) => openCircuit - droop * current), look: 5 }];
+}
+
+function openCircuit({ openCircuit: at }: CurveSeen): readonly Level[] {
+  return at === undefined ? [] : [{ at, name: `open ${formatQuantity(at, 'voltage', { significant: 3 })}` }];
 }
 
 function meanPower(trace: LimitTrace | undefined): Watts | undefined {
@@ -156,7 +159,7 @@ function inWords(
     point.gives === 'all'
       ? amps(point.current)
       : point.gives === 'some'
-        ? `${amps(point.current)} at times`
+        ? `up to ${amps(point.current)} at times`
         : 'nothing';
   return [
     style === undefined ? 'The style of the limit was not told.' : `${String(style.value)}: ${style.note}.`,

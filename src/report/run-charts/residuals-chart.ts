@@ -24,11 +24,15 @@ export function residualsFigure({ evidence, header }: Result): Markup | undefine
       id: 'residuals',
       title,
       description: inWords(residuals),
-      x: { label: 'Current', dimension: 'current', from: 0 },
+      x: {
+        label: 'Current',
+        dimension: 'current',
+        from: 0,
+        to: 1.03 * (seen.regulated.at(-1)?.current ?? 1),
+      },
       y: { label: 'Off the line', dimension: 'voltage' },
       sorts: sortsOf(residuals),
-      lines: expectedBand(residuals.residuals),
-      levels: [{ at: 0, name: 'the line' }],
+      lines: [zeroLine(residuals.residuals)],
     }),
     caption(residuals, paired),
   );
@@ -50,23 +54,24 @@ function sortsOf({ residuals }: ResidualsSeen): readonly PointSort[] {
   ];
 }
 
-/** About zero, as wide as each point's own readings promise. */
-function expectedBand(residuals: readonly Residual[]): readonly ChartLine[] {
+/** The fitted line, at zero, with what each point's own readings promise about it. */
+function zeroLine(residuals: readonly Residual[]): ChartLine {
   const edge = thinned(
     residuals.map(({ point, expected }) => ({ x: point.current, y: expected })),
-    100,
+    stretches,
   );
-  if (!edge.some(({ y }) => y > 0)) return [];
-  return [
-    {
-      name: 'readings alone',
-      xs: edge.map(({ x }) => x),
-      ys: edge.map(() => NaN),
-      band: { low: edge.map(({ y }) => -y), high: edge.map(({ y }) => y) },
-      look: 0,
-    },
-  ];
+  const line = { name: 'the fitted line', xs: edge.map(({ x }) => x), ys: edge.map(() => 0), look: 0 };
+  return isKnown(residuals)
+    ? { ...line, band: { low: edge.map(({ y }) => -y), high: edge.map(({ y }) => y) } }
+    : line;
 }
+
+/** Whether anything tells how far off a point may lie by chance. */
+function isKnown(residuals: readonly Residual[]): boolean {
+  return residuals.some(({ expected }) => expected > 0);
+}
+
+const stretches = 100;
 
 function inWords({ residuals }: ResidualsSeen): string {
   const furthest = residuals.reduce<Residual | undefined>(
@@ -75,7 +80,7 @@ function inWords({ residuals }: ResidualsSeen): string {
   );
   if (furthest === undefined) return 'No points.';
   const within = residuals.filter(({ off, expected }) => Math.abs(off) <= expected).length;
-  const expected = residuals.some((each) => each.expected > 0)
+  const expected = isKnown(residuals)
     ? ` ${within} lie within what their own readings promise with 95 %, about ±${millivolts(furthest.expected)}.`
     : '';
   return (
@@ -88,7 +93,7 @@ function caption({ degreesOfFreedom, residuals }: ResidualsSeen, paired: boolean
   const ways = paired
     ? ' The line goes through the mean of both ways at each current: where they differ, the module warms or something drifts.'
     : '';
-  if (!residuals.some(({ expected }) => expected > 0)) {
+  if (!isKnown(residuals)) {
     return `Each point has one reading, so nothing tells how far off one may lie by chance.${ways}`;
   }
   const by =

@@ -20,7 +20,8 @@ const toSettle = 5;
 /** A curve is drawn on to where it settles, but never so far that what was read becomes a corner of it. */
 const furthest = 6;
 const places = 81;
-const small = 110;
+const whole = { height: 240, left: 66, right: 150 };
+const small = { ...whole, height: 110 };
 
 /**
  * The soak that the findings rest on: temperature over time and where it goes, and below it what the voltage did.
@@ -38,7 +39,7 @@ export function soakFigure({ evidence, findings }: Result): Markup | undefined {
       seen.temperatures.length > 0 && temperatureChart(evidence, findings, seen, { start, end, title }),
       voltageChart(findings, seen, { start, end }),
     ),
-    caption(evidence, seen),
+    caption(evidence, findings, seen),
   );
 }
 
@@ -76,10 +77,11 @@ function temperatureChart(
     description: inWords(findings, seen),
     x: { label: 'Time under load', dimension: 'time', from: 0, to: end * 1.01 },
     y: { label: 'Temperature', dimension: 'temperature' },
-    sorts: [{ name: 'read', shape: 'square', look: 3, points }],
+    sorts: [{ name: 'read', shape: 'dot', look: 3, points }],
     lines: settling === undefined ? [] : wayOf(settling, seen, { start, end }),
     levels: levelsOf(evidence, seen),
-    whiskers: settling === undefined ? [] : [whiskerOf(settling, end)],
+    whiskers: whiskersOf(evidence, findings, seen, end),
+    size: whole,
   });
 }
 
@@ -95,22 +97,30 @@ function wayOf(
     const xs = Array.from({ length: places }, (_, index) => first + ((to - first) * index) / (places - 1));
     return { xs, ys: xs.map((t) => onTheWay(settling, t + start)) };
   };
-  const fitted = { name: 'fitted', ...between(from, last), look: 0 };
+  const fitted = { name: 'fitted settling', ...between(from, last), look: 0 };
   return end > last ? [fitted, { name: 'predicted', ...between(last, end), look: 1 }] : [fitted];
 }
 
-function whiskerOf(
-  { settled, interval: [low, high], timeConstant }: SettledTemperature,
+/** Where it settles: the rise above the air, with its interval; by the curve alone where nobody knows the air. */
+function whiskersOf(
+  evidence: Evidence,
+  findings: readonly Finding[],
+  seen: SoakSeen,
   x: Seconds,
-): Whisker {
-  const how = timeConstant === undefined ? 'settled at' : 'settles at';
-  return {
-    x,
-    low,
-    high,
-    look: 1,
-    says: `${how} ${degrees(settled)}, 95 % from ${degrees(low)} to ${degrees(high)}`,
-  };
+): readonly Whisker[] {
+  const { settling } = seen;
+  if (settling === undefined) return [];
+  const air = ambientOfSoak(evidence, seen)?.temperature;
+  const rise = findingNamed(findings, 'temperature-rise');
+  const words = `where it settles, ${degrees(settling.settled)}`;
+  if (air === undefined || rise === undefined || rise.interval === null) {
+    const [low, high] = settling.interval;
+    return [{ x, low, high, look: 1, says: words }];
+  }
+  const [low, high] = rise.interval;
+  return [
+    { x, low: air + low, high: air + high, look: 1, says: `${words}: a rise of ${foundInWords(rise)}` },
+  ];
 }
 
 function levelsOf(evidence: Evidence, seen: SoakSeen): readonly Level[] {
@@ -142,7 +152,7 @@ function voltageChart(findings: readonly Finding[], seen: SoakSeen, { start, end
     sorts: [
       {
         name: 'read',
-        shape: 'square',
+        shape: 'dot',
         look: 3,
         points: looks.map(({ t, voltage }) => ({
           x: t - start,
@@ -156,13 +166,13 @@ function voltageChart(findings: readonly Finding[], seen: SoakSeen, { start, end
         ? []
         : [
             {
-              name: 'drift',
+              name: 'drift at the end',
               xs: [line.from - start, line.to - start],
               ys: [line.fit.intercept, line.fit.intercept + (line.fit.slope * (line.to - line.from)) / hour],
               look: 0,
             },
           ],
-    height: small,
+    size: small,
   });
 }
 
@@ -180,22 +190,35 @@ function inWords(findings: readonly Finding[], { temperatures, settling, times, 
   ].join(' ');
 }
 
-function settlesInWords({ settled, interval: [low, high], timeConstant }: SettledTemperature): string {
-  const by = timeConstant === undefined ? '' : `, with a time constant of ${minutes(timeConstant.value)}`;
-  return `It settles at ${degrees(settled)}, 95 % from ${degrees(low)} to ${degrees(high)}${by}.`;
+function settlesInWords({ settled, timeConstant }: SettledTemperature): string {
+  return timeConstant === undefined
+    ? `It has settled at ${degrees(settled)}.`
+    : `It settles at ${degrees(settled)}, with a time constant of ${minutes(timeConstant.value)}.`;
 }
 
-function caption({ steps }: Evidence, { settling, step, temperatures }: SoakSeen): string {
-  const others = steps.filter(({ kind }) => kind === 'soak').length - 1;
-  const which = others > 0 ? ` Of ${others + 1} soaks this is step ${step}, on which the findings rest.` : '';
-  if (temperatures.length === 0) return `Nothing read the temperature.${which}`;
-  if (settling === undefined) return `Too little was watched to tell where the temperature goes.${which}`;
-  return (
-    `${settlesInWords(settling)} The bar at the end is that interval, by the scatter of the readings about the curve; ` +
-    `what thermometer and air may be wrong by stands in the budget of the rise.` +
-    (settling.timeConstant === undefined ? '' : ' Dashed: predicted, not read.') +
-    which
-  );
+function caption(
+  { steps }: Evidence,
+  findings: readonly Finding[],
+  { settling, step, temperatures }: SoakSeen,
+): string {
+  const soaks = steps.filter(({ kind }) => kind === 'soak').length;
+  const rise = findingNamed(findings, 'temperature-rise');
+  return [
+    ...(temperatures.length === 0 ? ['Nothing read the temperature.'] : []),
+    ...(settling === undefined
+      ? temperatures.length === 0
+        ? []
+        : ['Too little was watched to tell where the temperature goes.']
+      : [settlesInWords(settling)]),
+    ...(settling === undefined || rise === undefined
+      ? []
+      : [
+          `The rise above the air is ${foundInWords(rise)}: the bar at the end, in which thermometer and air count as ` +
+            'well as the scatter about the curve.',
+        ]),
+    ...(settling?.timeConstant === undefined ? [] : ['Dashed: predicted, not read.']),
+    ...(soaks > 1 ? [`Of ${soaks} soaks this is step ${step}, on which the findings rest.`] : []),
+  ].join(' ');
 }
 
 function minutes(time: Seconds): string {
