@@ -1,10 +1,10 @@
 import type { Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
+import { predictLine } from '../statistics/line-fit.js';
 import { coverageFactor } from '../statistics/student-t.js';
 import type { CurvePoint } from './curve.js';
 import type { CurveSeen } from './curve-seen.js';
 import { moduleVoltageErrors } from './promised-errors.js';
-import { lineAt } from './regulation-line.js';
 
 /** What the points lie off the line that was laid through them. */
 export interface ResidualsSeen {
@@ -43,7 +43,7 @@ export function residualsSeen(
   return {
     residuals: regulated.map((point) => ({
       point,
-      off: point.voltage - lineAt(line, point.current).value,
+      off: point.voltage - predictLine(line.fit, point.current).value,
       expected: factor * Math.sqrt(variance / point.readings + resolution ** 2),
     })),
     degreesOfFreedom: degreesOfFreedom === 0 ? undefined : degreesOfFreedom,

@@ -4,32 +4,9 @@ import { limitTraceOf } from '../../src/analysis/limit-trace.js';
 import { shortCircuitFindings } from '../../src/analysis/short-circuit.js';
 import type { JournalEvent } from '../../src/record/journal-event.js';
 import { collected, evenly, eventsOf, headerOf, type Recovered, type Step } from './evidence-of.js';
+import { type Gives, traced } from './trace-events.js';
 
 const known = { openCircuit: 15, droop: 0.02 };
-
-/** What the module gives at a voltage that is held, sample by sample; `null` is nothing at all. */
-type Gives = (voltage: number, sample: number) => number | null;
-
-/** The events of a trace over these voltages, ten samples a point, read without error. */
-function traced(gives: Gives, voltages: readonly number[], recoveries: readonly Recovered[] = []): Step {
-  const more: JournalEvent[] = voltages.flatMap((voltage, index) => {
-    const point = index + 1;
-    return [
-      { event: 'point-began', step: 1, point, phase: 'trace', set: { voltage } },
-      ...evenly(0, 9, 10).flatMap((sample): JournalEvent[] => {
-        const current = gives(voltage, sample);
-        const read = { event: 'reading', step: 1, point, sample: sample + 1 } as const;
-        return [
-          { ...read, of: 'meter', what: 'voltage', value: current === null ? 0 : voltage },
-          { ...read, of: 'load', what: 'voltage', value: current === null ? 0 : voltage },
-          { ...read, of: 'load', what: 'current', value: current ?? 0 },
-        ];
-      }),
-      { event: 'point-ended', step: 1, point, outcome: 'measured' },
-    ] satisfies JournalEvent[];
-  });
-  return { kind: 'limit-trace', recoveries, more };
-}
 
 const down = evenly(14.7, 1, 12);
 const evidenceOf = (step: Step) => collected(eventsOf([step]), headerOf());

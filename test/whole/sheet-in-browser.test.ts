@@ -6,6 +6,7 @@ import { type Browser, chromium, type Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { buildPage } from '../../src/report/page/build-page.js';
 import { madeParallel, madeSelection, madeSeries, madeStages } from '../report/sheet/made-builds.js';
+import { textsInTheWay } from './texts-in-the-way.js';
 
 const executablePath = '/usr/bin/chromium';
 const made = { program: 'railproof test', date: new Date('2026-12-02T03:30:00Z') };
@@ -178,50 +179,9 @@ describe.skipIf(isMissing)('a build sheet in a browser (needs /usr/bin/chromium)
   }
 });
 
-interface Box {
-  readonly said: string;
-  readonly left: number;
-  readonly top: number;
-  readonly right: number;
-  readonly bottom: number;
-}
-
 // What runs in the page is text, as the types of a browser are none of ours.
-const boxesOfDrawings = `[...document.querySelectorAll('svg[role=img]')].map((svg) =>
-  [svg, ...svg.querySelectorAll('text')].map((each) => {
-    const { left, top, right, bottom } = each.getBoundingClientRect();
-    return { said: each.textContent, left, top, right, bottom };
-  }))`;
 const marksOfDrawings = `[...document.querySelectorAll('svg[role=img]')].map((svg) =>
   [...svg.querySelectorAll('.line, .band, .bar, .spot, .heat, .contour, .box, .resistor, .symbol')].filter((mark) => {
     const { width, height } = mark.getBoundingClientRect();
     return width + height > 0;
   }).length)`;
-
-/** Pairs of texts of one drawing that overlap, and texts that reach out of it. */
-async function textsInTheWay(page: Page): Promise<readonly string[]> {
-  const drawings = await page.evaluate<Box[][]>(boxesOfDrawings);
-  return drawings.flatMap(([whole, ...texts]) => [
-    ...texts.filter((text) => whole === undefined || !holds(whole, text)).map(({ said }) => `out: ${said}`),
-    ...texts.flatMap((one, index) =>
-      texts
-        .slice(index + 1)
-        .filter((other) => overlap(one, other))
-        .map((other) => `${one.said} | ${other.said}`),
-    ),
-  ]);
-}
-
-function holds(whole: Box, { left, top, right, bottom }: Box): boolean {
-  return left > whole.left - 1 && right < whole.right + 1 && top > whole.top - 1 && bottom < whole.bottom + 1;
-}
-
-/** Boxes of text are higher than its letters: lines may touch by a pixel or two. */
-function overlap(one: Box, other: Box): boolean {
-  return (
-    one.left < other.right - 1 &&
-    other.left < one.right - 1 &&
-    one.top < other.bottom - 3 &&
-    other.top < one.bottom - 3
-  );
-}

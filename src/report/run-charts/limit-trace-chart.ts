@@ -23,6 +23,8 @@ const places = 61;
  * done.
  */
 export function limitTraceFigure({ evidence, findings }: Result): Markup | undefined {
+  if (!evidence.steps.some(({ kind }) => kind === 'limit-trace' || kind === 'dropout-search'))
+    return undefined;
   const seen = curveSeen(evidence);
   const { trace } = seen;
   const sorts = [...tracedSorts(trace), overloaded(evidence)];
