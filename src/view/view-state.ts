@@ -35,6 +35,8 @@ export interface ViewedRun {
   readonly simulated: boolean;
   /** ISO 8601, UTC. */
   readonly began: string;
+  /** How many steps, from the first, were done in the run that this one goes on with; none when left out. */
+  readonly done?: number;
   readonly steps: readonly {
     readonly kind: string;
     readonly summary: string;
@@ -115,8 +117,8 @@ export type ViewMessage =
   | { readonly kind: 'notice'; readonly notice: ViewedNotice }
   | { readonly kind: 'stopping' }
   | { readonly kind: 'ended'; readonly ended: ViewedEnd }
-  /** Every second, so that silence means that the runner is lost. */
-  | { readonly kind: 'beat' };
+  /** Every second, so that silence means that the runner is lost; with the times where they went on. */
+  | { readonly kind: 'beat'; readonly elapsed?: Seconds; readonly remaining?: Seconds };
 
 export const mostPoints = 600;
 export const mostNotices = 60;
@@ -149,8 +151,10 @@ export function applied(state: ViewState, message: ViewMessage): ViewState {
       return { ...state, stopping: true };
     case 'ended':
       return { ...state, ended: message.ended, question: undefined };
-    case 'beat':
-      return state;
+    case 'beat': {
+      const { elapsed = state.elapsed, remaining = state.remaining } = message;
+      return { ...state, elapsed, remaining };
+    }
   }
 }
 
