@@ -1,5 +1,6 @@
 import type {
   Answered,
+  CautionAcknowledged,
   Ended,
   GuardTripped,
   Recovery,
@@ -8,7 +9,9 @@ import type {
 } from '../record/journal-event.js';
 import type { Seconds } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
+import { type Happening, HappeningCollector, type Happenings } from './happenings.js';
 import { PointCollector, type PointEvidence } from './point-evidence.js';
+import { answerInWords, inputInWords, recoveryInWords } from './told-happening.js';
 
 export type { PointEvidence } from './point-evidence.js';
 
@@ -28,11 +31,20 @@ export interface Evidence {
   readonly resumed: readonly Resumed[];
   /** How many steps, from the first, a run that goes on would take over. */
   readonly stepsDone: number;
+  /** As far as there can be any: a journal that repeats them by the thousand has the first of them here. */
+  readonly cautions: readonly CautionAcknowledged[];
+  /** What else happened on the way. */
+  readonly happenings: Happenings;
 }
 
 export interface StepEvidence {
   readonly step: number;
   readonly kind: string;
+  readonly began: Seconds;
+  /** Undefined when it was broken off. */
+  readonly ended: Seconds | undefined;
+  /** Also of points that were taken again. */
+  readonly readings: number;
   readonly settings: Readonly<Record<string, unknown>>;
   readonly points: readonly PointEvidence[];
   readonly recoveries: readonly Recovery[];
@@ -42,6 +54,9 @@ export interface StepEvidence {
 type Growing<T> = {
   -readonly [Key in keyof T]: T[Key] extends readonly (infer Item)[] ? Item[] : T[Key];
 };
+
+/** There are half a dozen names; this is room for those of other versions. */
+const mostCautions = 50;
 
 /** Takes the events of a journal one after the other; memory grows with the points, not with the readings. */
 export class EvidenceCollector {
@@ -55,6 +70,8 @@ export class EvidenceCollector {
   #input: 'on' | 'off' | undefined;
   readonly #resumed: Resumed[] = [];
   #stepsDone = 0;
+  readonly #cautions: CautionAcknowledged[] = [];
+  readonly #happenings = new HappeningCollector();
 
   constructor(header: RunHeader) {
     this.#header = header;
@@ -66,6 +83,7 @@ export class EvidenceCollector {
     switch (event.event) {
       case 'reading':
         this.#readings += 1;
+        if (step) step.readings += 1;
         this.#point?.add(event);
         return;
       case 'step-began': {
@@ -73,6 +91,9 @@ export class EvidenceCollector {
         this.#steps.push({
           step: event.step,
           kind: event.kind,
+          began: event.t,
+          ended: undefined,
+          readings: 0,
           settings,
           points: [],
           recoveries: [],
@@ -86,21 +107,27 @@ export class EvidenceCollector {
         return;
       case 'point-ended':
         // Taken again; what was read before the connection was lost counts for nothing.
-        if (event.outcome === 'interrupted') step?.points.pop();
-        else if (this.#point) this.#point.point.outcome = event.outcome;
+        if (event.outcome === 'interrupted') {
+          step?.points.pop();
+          this.#tell('taken-again', 'a point was broken off by a lost connection and taken again', event);
+        } else if (this.#point) this.#point.point.outcome = event.outcome;
         this.#point = undefined;
         return;
       case 'recovery':
         step?.recoveries.push(event);
+        this.#tell('recovery', recoveryInWords(event), event);
         return;
       case 'answer':
         step?.answers.push(event);
+        this.#tell('answered', answerInWords(event), event);
         return;
       case 'guard-tripped':
         this.#tripped ??= event;
+        this.#tell('guard', `${event.guard}: ${event.text}`, event);
         return;
       case 'input':
         this.#input = event.confirmed ? event.state : 'on';
+        this.#tell('input', inputInWords(event), event);
         return;
       case 'ended':
         this.#ended = event;
@@ -109,13 +136,20 @@ export class EvidenceCollector {
         this.#resumed.push(event);
         return;
       case 'step-ended':
+        if (step) step.ended = event.t;
         if (event.carried !== undefined && event.step === this.#stepsDone + 1) this.#stepsDone += 1;
+        return;
+      case 'caution':
+        if (this.#cautions.length < mostCautions) this.#cautions.push(event);
+        return;
+      case 'prompt':
+        this.#tell('asked', event.text, event);
+        return;
+      case 'notice':
+        this.#tell('notice', event.text, event);
         return;
       case 'opened':
       case 'instrument':
-      case 'caution':
-      case 'prompt':
-      case 'notice':
         return;
     }
   }
@@ -131,6 +165,12 @@ export class EvidenceCollector {
       input: this.#input,
       resumed: this.#resumed,
       stepsDone: this.#stepsDone,
+      cautions: this.#cautions,
+      happenings: this.#happenings.result(),
     };
+  }
+
+  #tell(kind: Happening['kind'], text: string, { t }: Pick<TimedEvent, 't'>): void {
+    this.#happenings.add(kind, text, this.#steps.at(-1)?.step, t);
   }
 }

@@ -15,6 +15,8 @@ export interface PointEvidence {
   /** Which instrument `moduleVoltage` was read by: the load where the meter's probes were elsewhere. */
   readonly voltageBy: 'meter' | 'load';
   readonly loadVoltage: RunningMoments;
+  /** Also where the load was not asked: by it an unplugged output was shown to be dead. */
+  readonly meterVoltage: RunningMoments;
   readonly current: RunningMoments;
   /** Of what was read elsewhere than at the usual place, by where: `ballast-of-K1`. */
   readonly taps: ReadonlyMap<string, RunningMoments>;
@@ -68,7 +70,10 @@ export class PointCollector {
       addIfValue(momentsAt(point.taps, at), number);
       return;
     }
-    if (of === 'meter' && what === 'voltage') this.#meterVoltage = number;
+    if (of === 'meter' && what === 'voltage') {
+      this.#meterVoltage = number;
+      addIfValue(point.meterVoltage, number);
+    }
     if (of === 'load' && what === 'voltage') this.#loadVoltage = number;
     if (of !== 'load' || what !== 'current') return;
     const voltage = this.#moduleVoltage(number);
@@ -113,6 +118,7 @@ function newPoint({ point, phase, set, of }: PointBegan, t: Seconds): Growing<Po
     moduleVoltage: new RunningMoments(),
     voltageBy: 'meter',
     loadVoltage: new RunningMoments(),
+    meterVoltage: new RunningMoments(),
     current: new RunningMoments(),
     taps: new Map(),
     temperature: new RunningMoments(),

@@ -28,6 +28,13 @@ function needsSeal({ event, carried }: Readonly<Record<string, unknown>>): boole
   );
 }
 
+/** The seal of an event that `parseLine` gave, where it is one that is not believed without; undefined for others. */
+export function sealOf(event: TimedEvent): string | undefined {
+  const fields = event as TimedEvent & Readonly<Record<string, unknown>>;
+  const { seal } = fields;
+  return needsSeal(fields) && typeof seal === 'string' ? seal : undefined;
+}
+
 function parseJson(text: string): unknown {
   try {
     return JSON.parse(text);

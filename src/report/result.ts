@@ -14,8 +14,17 @@ export interface Result {
   readonly findings: readonly Finding[];
   readonly decisions: readonly Decision[];
   readonly outcome: Outcome | 'not-judged';
+  readonly fingerprints: Fingerprints;
   /** Where the program vanished or hung. */
   readonly watchman?: WatchmanReport;
+}
+
+/** By which it can be told later whether a record is still the one that a report is of; SHA-256, in hex. */
+export interface Fingerprints {
+  /** Of run.json as it was read. */
+  readonly header: string;
+  /** The last seal that was believed: of every byte of the journal up to it. Undefined where there is none. */
+  readonly lastSeal: string | undefined;
 }
 
 export type EndedHow = 'completed' | 'stopped' | 'failed' | 'cut-off';

@@ -2,6 +2,7 @@ import { analyse } from '../analysis/analyse.js';
 import { type Evidence, EvidenceCollector } from '../analysis/evidence.js';
 import { type Decision, judge, overall } from '../judgement/judge.js';
 import { checkJournal, type Integrity, otherHeader, readJournal } from '../record/journal-reader.js';
+import { sealOf } from '../record/journal-line.js';
 import { readWatchmanReport } from '../record/read-watchman-report.js';
 import { runFolderAt } from '../record/run-folder.js';
 import { readHeader } from '../record/run-header.js';
@@ -17,8 +18,10 @@ export function understand(path: string): Result {
   const { header, sha256 } = readHeader(path);
   const collector = new EvidenceCollector(header);
   let begunWith = sha256;
+  let lastSeal: string | undefined;
   const journal = readJournal(folder.journal, checkJournal(folder.journal), (event) => {
     if (event.event === 'opened') begunWith = event.header;
+    lastSeal = sealOf(event) ?? lastSeal;
     collector.add(event);
   });
   const integrity = begunWith === sha256 ? journal : changedHeader(journal);
@@ -34,6 +37,7 @@ export function understand(path: string): Result {
     findings,
     decisions,
     outcome: outcomeOf(integrity, evidence, decisions),
+    fingerprints: { header: sha256, lastSeal },
     ...(watchman === undefined ? {} : { watchman }),
   };
 }

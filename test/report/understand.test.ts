@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import { copyFileSync, mkdirSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -59,8 +60,13 @@ describe('a record made on the simulated bench', () => {
   it.each(limits.map(({ style }) => style))(
     'of a module of the style %s: gives the same findings again',
     (style) => {
-      const { result, path } = recordOf(style);
+      const { result, path, lines } = recordOf(style);
       const again = understand(path);
+      const { seal } = JSON.parse(lines.at(-1) ?? '') as { seal: string };
+      const header = createHash('sha256')
+        .update(readFileSync(join(path, 'run.json')))
+        .digest('hex');
+      expect(again.fingerprints).toEqual({ header, lastSeal: seal });
       expect(again.findings).toEqual(result.findings);
       expect(again.decisions).toEqual(result.decisions);
       expect(again.integrity.kind).toBe('whole');
