@@ -21,8 +21,8 @@ export interface StopWishes {
   readonly signal: AbortSignal;
   /** Aborted by the second wish: whoever repeats it will not wait for an answer that may never come. */
   readonly hurry: AbortSignal;
-  /** The same wish as Ctrl-C, which at a question is a key and no signal. */
-  readonly wish: () => void;
+  /** The same wish, which at a question is a key and no signal, and may come from a page; Ctrl-C when nothing is said. */
+  readonly wish: (reason?: string) => void;
   release(): void;
 }
 
@@ -64,8 +64,8 @@ export function stopOnSignals(streams: Streams): StopWishes {
   return {
     signal: first.signal,
     hurry: second.signal,
-    wish: () => {
-      wish(reasons.SIGINT);
+    wish: (reason = reasons.SIGINT) => {
+      wish(reason);
     },
     release: () => {
       for (const [name, handler] of handlers) process.off(name, handler);

@@ -102,12 +102,16 @@ export interface World {
 
 /**
  * The ways to connect that a bench needs, each loaded only when it is used. Where every instrument is
- * simulated or replayed, time is virtual: an hour passes in a moment.
+ * simulated or replayed, time is virtual: an hour passes in a moment, or as `virtual` has it.
  */
-export async function worldOf(bench: Bench, drivers: BenchDrivers): Promise<World> {
+export async function worldOf(
+  bench: Bench,
+  drivers: BenchDrivers,
+  virtual: (began: Date) => Clock = (began) => new VirtualClock(began),
+): Promise<World> {
   const kinds = postsOf(bench).map(([, place]) => place.connection.kind);
   const clock = kinds.every((kind) => kind === 'simulated' || kind === 'replay')
-    ? new VirtualClock(realClock.wall())
+    ? virtual(realClock.wall())
     : realClock;
   const simulation =
     bench.simulation === undefined || !kinds.includes('simulated')

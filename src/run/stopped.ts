@@ -6,6 +6,13 @@ export class StoppedByOperator extends RailproofError {
   readonly exitCode = exitCodes.stopped;
 }
 
+/** Nobody can answer at the terminal any more. */
+export class TerminalClosed extends StoppedByOperator {
+  constructor() {
+    super('the terminal was closed at a question');
+  }
+}
+
 /** Something broke that nobody foresaw, outside of any step; the run ends as safely as any other. */
 export class UnforeseenError extends RailproofError {
   readonly code = 'UNFORESEEN';
@@ -30,7 +37,8 @@ export class OperatorAbsentError extends RailproofError {
 
   constructor(steps: readonly string[]) {
     super(`the procedure needs someone at the bench for ${steps.join(', ')} and there is no terminal`, {
-      advice: 'run it in a terminal; --yes acknowledges wiring and cautions only',
+      advice:
+        'run it in a terminal, or with --view, which serves a page to answer on; --yes acknowledges wiring and cautions only',
     });
   }
 }

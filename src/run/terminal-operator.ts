@@ -4,7 +4,7 @@ import { printableLines } from '../quantity/printable.js';
 import { typedAs } from '../quantity/typed-as.js';
 import type { Acknowledgement } from '../record/journal-event.js';
 import type { Operator, OperatorRequest } from '../steps/operator.js';
-import { StoppedByOperator } from './stopped.js';
+import { TerminalClosed } from './stopped.js';
 import { fitted } from '../quantity/word-wrap.js';
 
 /** Longer lines are hard to read, however wide the window. */
@@ -84,7 +84,7 @@ export class TerminalOperator implements Operator {
    */
   async #question(text: string, signal: AbortSignal): Promise<string> {
     const { input, output } = this.#terminal;
-    if (input.readableEnded || input.destroyed) throw closedAtQuestion();
+    if (input.readableEnded || input.destroyed) throw new TerminalClosed();
     signal.throwIfAborted();
     const lines = this.#fitted(text).split('\n');
     const prompt = lines.pop() ?? '';
@@ -97,11 +97,11 @@ export class TerminalOperator implements Operator {
     const closed = new AbortController();
     const lines = createInterface({ input, output });
     lines.once('close', () => {
-      closed.abort(closedAtQuestion());
+      closed.abort(new TerminalClosed());
     });
     // A terminal that is gone reports an error, which must not end the program with the load on.
     lines.on('error', () => {
-      closed.abort(closedAtQuestion());
+      closed.abort(new TerminalClosed());
     });
     lines.on('SIGINT', () => {
       this.#terminal.interrupted();
@@ -124,8 +124,4 @@ function numbered(text: string): string {
   return lines
     .map((line, index) => (lines.length === 1 ? `  ${line}` : `  ${index + 1}. ${line}`))
     .join('\n');
-}
-
-function closedAtQuestion(): StoppedByOperator {
-  return new StoppedByOperator('the terminal was closed at a question');
 }

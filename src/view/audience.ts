@@ -53,7 +53,8 @@ export class Audience {
       return;
     }
     if (message.kind === 'step') this.#waiting = undefined;
-    if (message.kind === 'ended') this.#tellWaiting();
+    // What comes after it must not be set back by it.
+    if (message.kind === 'ended' || message.kind === 'beat') this.#tellWaiting();
     this.#tell(message);
   }
 
