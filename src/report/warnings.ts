@@ -1,0 +1,62 @@
+import type { WatchmanReport } from '../record/watchman-report.js';
+import { endedHow, type Result } from './result.js';
+import { watchmanText } from './watchman-text.js';
+
+/** What must be known before anything of a record is believed: one word for all to see, and what it is. */
+export interface Warning {
+  readonly word: string;
+  readonly text: string;
+}
+
+/** The worst first: that the record is damaged, that the load may be on, whose modules these are, how it ended. */
+export function warningsOf(result: Result): readonly Warning[] {
+  return [...notWhole(result), ...stillOn(result), ...otherModules(result), ...endedBadly(result)];
+}
+
+function notWhole(result: Result): readonly Warning[] {
+  const { integrity } = result;
+  if (integrity.kind === 'damaged') {
+    const { line, problem, lines } = integrity;
+    const text = `line ${line} of the journal: ${problem}. What follows rests on the first ${lines} lines.`;
+    return [{ word: 'DAMAGED RECORD', text }];
+  }
+  return endedHow(result).how === 'cut-off'
+    ? [{ word: 'CUT OFF', text: 'the record ends without an end; what follows is what is whole.' }]
+    : [];
+}
+
+const switchOff = '`railproof safe --bench <file>` switches it off.';
+
+function stillOn(result: Result): readonly Warning[] {
+  const { evidence, watchman } = result;
+  const isCutOff = endedHow(result).how === 'cut-off';
+  if (isCutOff && watchman !== undefined) return watched(watchman);
+  if (evidence.input !== 'on') return [];
+  return isCutOff
+    ? [{ word: 'THE LOAD WAS ON', text: `when the record broke off: ${switchOff}` }]
+    : [{ word: 'THE LOAD MAY BE ON', text: `nobody could read back that it went off. ${switchOff}` }];
+}
+
+/** What became of the program, and of the load. */
+function watched(report: WatchmanReport): readonly Warning[] {
+  const told = { word: 'WATCHMAN', text: `${watchmanText(report)}.` };
+  return report.outcome === 'off' ? [told] : [told, { word: 'THE LOAD MAY BE ON', text: switchOff }];
+}
+
+function otherModules({ header: { baseline, modules } }: Result): readonly Warning[] {
+  const names = modules.map(({ name }) => name).join(', ');
+  if (baseline === undefined || baseline.modules.join(', ') === names) return [];
+  const text = `the baseline is of ${baseline.modules.join(', ')}, this record of ${names}.`;
+  return [{ word: 'DIFFERENT MODULES', text }];
+}
+
+function endedBadly(result: Result): readonly Warning[] {
+  const { how, reason } = endedHow(result);
+  if (how === 'stopped') return [{ word: 'STOPPED', text: (reason ?? '').replace(/^stopped /, '') }];
+  return how === 'failed' ? [{ word: 'FAILED', text: reason ?? '' }] : [];
+}
+
+/** `THE LOAD WAS ON when the record broke off: …`, `CUT OFF: the record ends …`. */
+export function warningInWords({ word, text }: Warning): string {
+  return text.startsWith('when ') ? `${word} ${text}` : `${word}: ${text}`;
+}
