@@ -3,6 +3,7 @@ import { exitCodeOf, exitCodes, type ExitCode } from '../errors/railproof-error.
 import { printableLines } from '../quantity/printable.js';
 import type { ShownAs } from './build-shown.js';
 import type { CombineOptions } from './combine.js';
+import type { CompareOptions } from './compare.js';
 import type { DriversOptions } from './drivers.js';
 import { errorText } from './error-text.js';
 import { packageFacts } from './package-facts.js';
@@ -42,6 +43,7 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
       writeErr: (text) => streams.stderr.write(printableLines(text)),
     })
     .showHelpAfterError('(railproof help <command> shows examples)')
+    .addHelpText('after', firstSteps)
     .addHelpText('after', exitStatusHelp);
 
   const command = (usage: string, description: string, example: string): Command =>
@@ -51,6 +53,8 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
       .addHelpText('after', `\nExample:\n  ${example}\n`)
       .showHelpAfterError(`(railproof help ${usage.replace(/ .*/, '')} shows an example)`);
   const json = (): Option => new Option('--json', 'print one JSON object instead of text');
+  const junit = (): Option =>
+    new Option('--junit <file>', 'keep the decisions as JUnit XML, for what reads the results of tests: junit.xml');
   const ballast = (): Option =>
     new Option(
       '--ballast <resistance>',
@@ -84,8 +88,13 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
       'how far it may be from the baseline: a shipped tolerance by its name, or a file',
     )
     .option('--yes', 'acknowledge wiring and cautions beforehand (for unattended benches)')
+    .option(
+      '--view',
+      'serve a page on this machine that shows the run, and on which it is answered and stopped; its address opens once',
+    )
     .option('--trace', 'keep every byte and when it came with the record, so that the run can be played back')
     .option('--dry-run', 'show what would be done, and touch nothing')
+    .addOption(junit())
     .addOption(json())
     .action(async (procedure: string | undefined, options: RunOptions) => {
       const { run } = await import('./run.js');
@@ -98,10 +107,11 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     'railproof analyse fixtures/runs/20261130T091500Z-K1-real-limit',
   )
     .option('--strict', 'refuse a record that was cut off or damaged')
+    .addOption(junit())
     .addOption(json())
-    .action(async (run: string, options: { strict?: boolean; json?: boolean }) => {
+    .action(async (run: string, options: { strict?: boolean; json?: boolean; junit?: string }) => {
       const { analyseRecord } = await import('./analyse.js');
-      done(analyseRecord({ run, ...options }, streams));
+      done(await analyseRecord({ run, ...options }, streams));
     });
 
   command(
@@ -114,8 +124,9 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
       'what must have changed and what must not: a shipped tolerance by its name, or a file',
       'unchanged',
     )
+    .addOption(junit())
     .addOption(json())
-    .action(async (earlier: string, later: string, options: { tolerance: string; json?: boolean }) => {
+    .action(async (earlier: string, later: string, options: CompareOptions) => {
       const { compareRecords } = await import('./compare.js');
       done(await compareRecords({ earlier, later, ...options }, streams));
     });
@@ -262,6 +273,14 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
 
   return program;
 }
+
+const firstSteps = `
+To begin:
+  railproof new bench    asks what is on the bench, or makes one up to try things on
+  railproof new module   asks what the label of the module says
+  railproof run quick-look --bench bench.yaml --module K1.yaml --dry-run
+What puzzles you at the bench is in TROUBLESHOOTING.md, by symptom.
+`;
 
 const exitStatusHelp = `
 Exit status:

@@ -28,7 +28,9 @@ export function openDocument(kind: FileKind, text: string, fileName: string): Ya
   const itsKind = headerKind(document);
   if (itsKind !== kind) {
     const message = `this is a ${itsKind} file; a ${kind} file is needed`;
-    throw new BadFileError([document.place({ path: ['railproof'], message })]);
+    throw new BadFileError([document.place({ path: ['railproof'], message })], {
+      advice: `are two files exchanged? A ${kind} file begins with 'railproof: ${headers[kind]}'`,
+    });
   }
   return document;
 }
@@ -55,7 +57,10 @@ export function badFile(
 
 function headerKind(document: YamlDocument): FileKind {
   const refuse = (message: string, path: readonly string[] = []): never => {
-    throw new BadFileError([document.place({ path, message })]);
+    throw new BadFileError([document.place({ path, message })], {
+      advice:
+        'is it the file that was meant? `railproof new bench`, and likewise module and procedure, writes one to begin with',
+    });
   };
   const { value, topKeys } = document;
   const firstLine = `the first line names the kind of file, as in 'railproof: ${headers.module}'`;

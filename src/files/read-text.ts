@@ -58,7 +58,7 @@ function decode(bytes: Uint8Array, path: string): string {
     const lenient = new TextDecoder().decode(bytes);
     const before = lenient.slice(0, Math.max(0, lenient.indexOf('\ufffd'))).split('\n');
     const column = (before.at(-1)?.length ?? 0) + 1;
-    const message = 'not valid UTF-8 text; save the file as UTF-8';
+    const message = 'not valid UTF-8 text; save the file as UTF-8, if it is the file that was meant';
     throw new BadFileError([{ file: path, line: before.length, column, path: '', message }], {
       cause: error,
     });

@@ -47,7 +47,7 @@ it('a file in another encoding is refused where it first shows', async () => {
   await writeFile(path, Buffer.from('name: K1\nambient: 40 °C\n', 'latin1'));
   await expect(reading(path)).rejects.toMatchObject({
     code: 'BAD_FILE',
-    message: `${path}:2:13: not valid UTF-8 text; save the file as UTF-8`,
+    message: `${path}:2:13: not valid UTF-8 text; save the file as UTF-8, if it is the file that was meant`,
   });
 });
 
