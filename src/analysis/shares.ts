@@ -8,8 +8,7 @@ import { amps, percent } from './in-words.js';
 import { budgetOf, type GroupLook } from './module-currents.js';
 
 /**
- * `share-of-<module>`: its current over that of all modules, sₖ = Iₖ/ΣI, at a look. ∂sₖ/∂Iⱼ = (δₖⱼ − sₖ)/ΣI,
- * so that whatever scales all currents alike drops out.
+ * `share-of-<module>`: its current over that of all modules, sₖ = Iₖ/ΣI, at a look.
  * @param curve all held looks, for what the note tells of the rest.
  */
 export function shareFindings(
@@ -24,14 +23,21 @@ export function shareFindings(
   const there = below === undefined ? [] : carriedAt(below);
   return look.currents.map(({ module, current }, index) => {
     const share = current / sum;
-    const weights = look.currents.map((_, other) => ((other === index ? 1 : 0) - share) / sum);
     const elsewhere =
       below === undefined ? '' : `; ${percent(there[index]?.share ?? 0)} of ${amps(below.total)}`;
-    return measured(`share-of-${module}`, 'ratio', share, budgetOf(header, look, { modules: weights }), {
+    return measured(`share-of-${module}`, 'ratio', share, shareBudget(header, look, index), {
       step: look.step,
       note: `${amps(here[index]?.current ?? 0)} of ${amps(look.total)}${elsewhere}`,
     });
   });
+}
+
+/** ∂sₖ/∂Iⱼ = (δₖⱼ − sₖ)/ΣI, so that whatever scales all currents alike drops out of a share. */
+export function shareBudget(header: RunHeader, look: GroupLook, index: number): readonly Contribution[] {
+  const sum = sumOf(look);
+  const share = (look.currents[index]?.current ?? 0) / sum;
+  const modules = look.currents.map((_, other) => ((other === index ? 1 : 0) - share) / sum);
+  return budgetOf(header, look, { modules });
 }
 
 /**

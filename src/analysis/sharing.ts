@@ -5,14 +5,11 @@ import { type Finding, inWords } from './finding.js';
 import { recommendedBallast } from './group-ballast.js';
 import { groupCurrent } from './group-current.js';
 import { howItFailed } from './group-failure.js';
-import { heldLooks } from './held-looks.js';
 import { hoggingFinding } from './hogging.js';
-import { currentsAddUp } from './kirchhoff.js';
-import { groupLooks } from './module-currents.js';
 import { moduleLines } from './module-lines.js';
 import { type OwnLabels, smallestLabel, withinOwnLabels } from './own-labels.js';
-import { firstToSaturate } from './saturation.js';
 import { imbalanceFinding, shareFindings } from './shares.js';
+import { sharingSeen } from './sharing-seen.js';
 
 /** What the step takes when a procedure says nothing; a record made elsewhere may hold neither. */
 const usual = { imbalance: 0.1, tolerance: 0.01 };
@@ -33,24 +30,22 @@ export function sharingFindings(
   },
 ): { readonly findings: readonly Finding[]; readonly ownLabels?: OwnLabels } {
   const { header } = evidence;
-  if (header.circuit !== 'parallel') return { findings: [] };
-  const looks = groupLooks(evidence);
-  const addUp = currentsAddUp(header, looks);
-  const held = heldLooks(header, looks);
+  const seen = sharingSeen(evidence);
+  if (seen === undefined) return { findings: [] };
+  const { looks, kirchhoff, held, saturated } = seen;
   const highest = held.at(-1);
   const step = looks[0]?.step ?? null;
-  if (addUp.kind === 'wrong-ballasts' || addUp.kind === 'unexplained') {
+  if (kirchhoff.kind === 'wrong-ballasts' || kirchhoff.kind === 'unexplained') {
     return {
       findings: [
         ...present(groupCurrent(evidence, found, '')),
-        inWords('hogging-module', 'undetermined', { step, note: addUp.note }),
-        ...(addUp.kind === 'wrong-ballasts' ? addUp.ballasts : []),
+        inWords('hogging-module', 'undetermined', { step, note: kirchhoff.note }),
+        ...(kirchhoff.kind === 'wrong-ballasts' ? kirchhoff.ballasts : []),
       ],
       ownLabels: smallestLabel(header),
     };
   }
   if (highest === undefined) return { findings: present(groupCurrent(evidence, found, '')) };
-  const saturated = firstToSaturate(held);
   const { imbalance: setting, tolerance } = settingsOf(evidence, highest.step);
   const lines = moduleLines(header, looks, saturated);
   return {

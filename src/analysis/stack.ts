@@ -2,20 +2,16 @@ import { touchable } from '../circuit/touchable.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
-import { combine, expandedFor } from '../statistics/uncertainty-budget.js';
 import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, inWords, measured } from './finding.js';
 import { groupCurrent } from './group-current.js';
 import { amps } from './in-words.js';
-import { type StackLook, stackLooks, sumBudget, sumUpTo } from './module-voltages.js';
+import { type StackLook, sumBudget, sumUpTo } from './module-voltages.js';
 import { isComplete } from './place-looks.js';
 import { promised, promisedErrors } from './promised-errors.js';
-
+import { stackSeen } from './stack-seen.js';
 import { howTheStackFailed, weakestModule } from './weakest-module.js';
-
-/** A sum that chance makes as wrong as this less often is wrong. */
-const strictLevel = 1e-3;
 
 /**
  * How a series string stands: `stack-voltage` with no load, `float-voltage-of-<module>` of each 0 V above
@@ -31,10 +27,10 @@ export function stackFindings(
   },
 ): readonly Finding[] {
   const { header } = evidence;
-  if (header.circuit !== 'series') return [];
-  const looks = stackLooks(evidence);
+  const seen = stackSeen(evidence);
+  if (seen === undefined) return [];
+  const { looks, wrong } = seen;
   const idle = lightest(looks.filter((look) => isComplete(look, header)));
-  const wrong = worstSum(header, looks);
   const step = looks[0]?.step ?? null;
   if (wrong !== undefined) {
     const { look, sum } = wrong;
@@ -59,23 +55,6 @@ function lightest(looks: readonly StackLook[]): StackLook | undefined {
     .filter(({ kind, outcome }) => kind === 'together' || (kind === 'climb' && outcome === 'held'))
     .sort((one, other) => one.current - other.current || one.step - other.step)
     .at(0);
-}
-
-function worstSum(
-  header: RunHeader,
-  looks: readonly StackLook[],
-): { readonly look: StackLook; readonly sum: Volts } | undefined {
-  let worst: { readonly look: StackLook; readonly sum: Volts; readonly beyond: number } | undefined;
-  const places = header.modules.length;
-  for (const look of looks) {
-    if (!isComplete(look, header) || look.kind === 'after' || look.outcome === 'dropped') continue;
-    const sum = sumUpTo(look, places);
-    const budget = sumBudget(header, look, { upTo: places, lessOutput: true });
-    const allowed = expandedFor(combine(budget), 1 - strictLevel);
-    const beyond = Math.abs(sum - look.output) / (allowed + 1e-9 * Math.max(1, Math.abs(look.output)));
-    if (beyond > (worst?.beyond ?? 1)) worst = { look, sum, beyond };
-  }
-  return worst;
 }
 
 /** From the output itself: what an open-circuit step measured, else the look with the load off. */

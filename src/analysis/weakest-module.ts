@@ -1,4 +1,4 @@
-import type { Ratio, Volts } from '../quantity/quantity.js';
+import type { Amperes, Ratio, Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { type Finding, inWords } from './finding.js';
 import { amps, percent, volts } from './in-words.js';
@@ -54,9 +54,13 @@ export function howTheStackFailed(header: RunHeader, looks: readonly StackLook[]
   return collapse === undefined ? '' : `${collapse.module} ${collapse.how}`;
 }
 
-interface Collapse {
+/** The module of a string whose voltage goes first. */
+export interface Collapse {
   readonly module: string;
   readonly step: number;
+  /** The current that was asked for when it went, and the highest that the string held. */
+  readonly at: Amperes;
+  readonly held: Amperes | undefined;
   /** What a sentence says of it: `collapses at 3.60 A …`. */
   readonly how: string;
 }
@@ -65,7 +69,7 @@ interface Collapse {
  * The module that lost most of its voltage at the lowest dropped point. Where one place only was read there,
  * it speaks for itself, and of two modules for the other one.
  */
-function firstCollapse(header: RunHeader, looks: readonly StackLook[]): Collapse | undefined {
+export function firstCollapse(header: RunHeader, looks: readonly StackLook[]): Collapse | undefined {
   const dropped = looks
     .filter(({ kind, outcome }) => kind === 'climb' && outcome === 'dropped')
     .sort((one, other) => (one.set ?? 0) - (other.set ?? 0))
@@ -73,7 +77,8 @@ function firstCollapse(header: RunHeader, looks: readonly StackLook[]): Collapse
   if (dropped === undefined) return undefined;
   const sags = sagsAt(looks, dropped);
   const worst = [...sags].sort((one, other) => other.sag - one.sag).at(0);
-  const at = amps(dropped.set ?? dropped.current);
+  const asked = dropped.set ?? dropped.current;
+  const at = amps(asked);
   const held = highestHeld(
     header,
     looks.filter(({ kind }) => kind === 'climb'),
@@ -81,7 +86,7 @@ function firstCollapse(header: RunHeader, looks: readonly StackLook[]): Collapse
   const after = held === undefined ? '' : `, it held ${amps(held.current)}`;
   if (worst !== undefined && worst.sag > collapsed) {
     const how = `collapses at ${at} (${volts(worst.idle)} fall to ${volts(worst.volts)})${after}`;
-    return { module: worst.module, step: dropped.step, how };
+    return { module: worst.module, step: dropped.step, at: asked, held: held?.current, how };
   }
   const others = header.modules.filter(({ name }) => !sags.some(({ module }) => module === name));
   const [only] = others;
@@ -90,6 +95,8 @@ function firstCollapse(header: RunHeader, looks: readonly StackLook[]): Collapse
   return {
     module: only.name,
     step: dropped.step,
+    at: asked,
+    held: held?.current,
     how: `collapses at ${at}, as ${rest} kept ${sags.length === 1 ? 'its' : 'their'} voltage when the string dropped out${after}`,
   };
 }
