@@ -1,7 +1,9 @@
 import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
+import { runSuite } from '../report/junit/run-suite.js';
 import type { Result } from '../report/result.js';
 import { understand } from '../report/understand.js';
 import { statusOfOutcome } from './exit-status.js';
+import { placeForJunit } from './junit-written.js';
 import { resumeHint } from './resume-hint.js';
 import { shown } from './shown.js';
 import type { Streams } from './streams.js';
@@ -24,11 +26,18 @@ export class NotWholeError extends RailproofError {
 }
 
 /** `railproof analyse`: what a record shows, worked out again; it ends with the status that the run ended with. */
-export function analyseRecord(
-  wanted: { readonly run: string; readonly strict?: boolean; readonly json?: boolean },
+export async function analyseRecord(
+  wanted: {
+    readonly run: string;
+    readonly strict?: boolean;
+    readonly json?: boolean;
+    readonly junit?: string;
+  },
   streams: Streams,
-): ExitCode {
+): Promise<ExitCode> {
+  const keepJunit = await placeForJunit(wanted.junit);
   const result = understand(wanted.run);
+  await keepJunit(runSuite(result));
   if (wanted.strict === true && result.integrity.kind !== 'whole') throw new NotWholeError(result);
   streams.stdout.write(shown(result, wanted.json === true, streams));
   streams.stderr.write(resumeHint(wanted.run, result));

@@ -18,7 +18,7 @@ export interface ShownAs {
   readonly json?: boolean;
 }
 
-/** Looks where the sheet is to go. @throws PageNotKeptError */
+/** Looks where the sheet is to go. @throws FileNotKeptError */
 export async function checkShown({ sheet }: ShownAs): Promise<void> {
   if (sheet === undefined) return;
   const { checkPage } = await import('./page-written.js');

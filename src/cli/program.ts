@@ -54,7 +54,10 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
       .showHelpAfterError(`(railproof help ${usage.replace(/ .*/, '')} shows an example)`);
   const json = (): Option => new Option('--json', 'print one JSON object instead of text');
   const junit = (): Option =>
-    new Option('--junit <file>', 'keep the decisions as JUnit XML, for what reads the results of tests: junit.xml');
+    new Option(
+      '--junit <file>',
+      'keep the decisions as JUnit XML, for what reads the results of tests: junit.xml',
+    );
   const ballast = (): Option =>
     new Option(
       '--ballast <resistance>',

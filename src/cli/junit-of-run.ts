@@ -1,0 +1,47 @@
+import { RailproofError } from '../errors/railproof-error.js';
+import { runSuite } from '../report/junit/run-suite.js';
+import { unfinishedSuite } from '../report/junit/unfinished-suite.js';
+import type { Plan } from '../run/plan.js';
+import { placeForJunit } from './junit-written.js';
+import type { PlanPerformed } from './perform-plan.js';
+
+/**
+ * The JUnit report that is kept of a run; none where none is wanted. It is there before anything is energised, so
+ * that the place is known to be writable, and holds an error until the run has ended.
+ */
+export interface JunitOfRun {
+  notBegun(error: unknown): Promise<void>;
+  /** Why it could not be kept, where it could not: that must not hide how the bench was left. */
+  end(performed: PlanPerformed): Promise<RailproofError | undefined>;
+}
+
+/** @throws FileNotKeptError */
+export async function junitOfRun(
+  path: string | undefined,
+  plan: Plan,
+  wall: () => Date,
+): Promise<JunitOfRun> {
+  const keep = await placeForJunit(path);
+  const what = { name: 'a run', procedure: plan.procedure.name, modules: plan.underTest.name };
+  await keep(unfinishedSuite(what, 'not-ended', 'the run has not ended, or ended without a word', wall()));
+  return {
+    notBegun: (error) => keep(unfinishedSuite(what, 'not-begun', textOf(error), wall())),
+    async end({ understood, folder }) {
+      const suite =
+        understood.kind === 'result'
+          ? runSuite(understood.result)
+          : unfinishedSuite({ ...what, name: folder.name }, 'not-read', textOf(understood.error), wall());
+      try {
+        await keep(suite);
+        return undefined;
+      } catch (error) {
+        if (error instanceof RailproofError) return error;
+        throw error;
+      }
+    },
+  };
+}
+
+function textOf(error: unknown): string {
+  return error instanceof Error ? error.message : String(error);
+}

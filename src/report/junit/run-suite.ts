@@ -1,0 +1,140 @@
+import { type Finding, findingNamed } from '../../analysis/finding.js';
+import type { Decision } from '../../judgement/judge.js';
+import { formatInterval } from '../../quantity/format-quantity.js';
+import { inOneLine } from '../finding-text.js';
+import { journalInWords, probabilityInWords } from '../record-words.js';
+import { endedHow, type Result } from '../result.js';
+import { takenOver } from '../taken-over.js';
+import { watchmanText } from '../watchman-text.js';
+import type { Came, Case, Suite } from './suite.js';
+
+/**
+ * A record as a suite: a case for each decision. One that does not conform is a failure of the type
+ * `does-not-conform`, one that is undecided a failure of the type `undecided`: what nobody can tell has not
+ * passed. A run that did not come to its end, and a journal that can't be believed to its end, is an error. A
+ * record of which nothing is required has one case, which is skipped.
+ */
+export function runSuite(result: Result): Suite {
+  const { run, header, evidence, decisions } = result;
+  const group = groupOf(result);
+  return {
+    name: run,
+    began: header.began,
+    lasted: evidence.lasted,
+    properties: propertiesOf(result),
+    cases: [
+      ...troubles(result).map((trouble): Case => ({ group, ...trouble })),
+      ...decisions.map((decision): Case => {
+        const name = `${decision.finding} ${decision.requirement}`;
+        return { name, group, came: decided(decision, findingNamed(result.findings, decision.finding)) };
+      }),
+      ...(decisions.length === 0 ? [nothingToJudge(group)] : []),
+    ],
+  };
+}
+
+/** What was under test, and by which procedure. */
+function groupOf({ header: { modules, procedure } }: Result): string {
+  return `${modules.map(({ name }) => name).join('+')}.${procedure.name}`;
+}
+
+/** What a reader of the file alone must know of the record. */
+export function propertiesOf(result: Result): Suite['properties'] {
+  const { header, evidence, integrity, outcome, run } = result;
+  const { modules, circuit, procedure, bench, program, instruments, baseline } = header;
+  const { how } = endedHow(result);
+  return [
+    ['record', run],
+    ['program', `${program.name} ${program.version}`],
+    ['module', modules.map(({ name }) => name).join('+')],
+    ['circuit', circuit],
+    ['procedure', procedure.name],
+    ['bench', bench.name],
+    ['simulated', String(bench.simulated)],
+    ...instruments.map(({ role, identity, driver, address }): [string, string] => [
+      `instrument.${role}`,
+      `${identity}, ${driver}, ${address}`,
+    ]),
+    ...(baseline === undefined ? [] : [['baseline', baseline.run] as const]),
+    ...takenOver(evidence).map((part): [string, string] => [
+      'resumed',
+      `steps ${part.first} to ${part.last} of ${part.run}`,
+    ]),
+    ['ended', how],
+    ['outcome', outcome],
+    ['integrity', integrity.kind],
+    ['journal', journalInWords(integrity)],
+    ['readings', String(evidence.readings)],
+  ];
+}
+
+/** Why the record can't be taken for all that was to be shown. */
+export function troubles(result: Result): readonly Pick<Case, 'name' | 'came'>[] {
+  const { integrity } = result;
+  const ending = endingOf(result);
+  return [
+    ...(ending === undefined ? [] : [{ name: 'the run', came: { kind: 'error' as const, ...ending } }]),
+    ...(integrity.kind === 'damaged'
+      ? [
+          {
+            name: 'the journal',
+            came: { kind: 'error' as const, type: 'damaged', message: damage(integrity) },
+          },
+        ]
+      : []),
+  ];
+}
+
+function endingOf(result: Result): { readonly type: string; readonly message: string } | undefined {
+  const { how, reason } = endedHow(result);
+  switch (how) {
+    case 'completed':
+      return undefined;
+    case 'stopped':
+      return { type: how, message: `the run was stopped: ${reason ?? 'no reason is given'}` };
+    case 'failed':
+      return { type: how, message: `the run failed: ${reason ?? 'no reason is given'}` };
+    case 'cut-off': {
+      const { watchman } = result;
+      const dead = watchman === undefined ? '' : `: ${watchmanText(watchman)}`;
+      return { type: how, message: `the record is cut off, and the run has no end${dead}` };
+    }
+  }
+}
+
+function damage({ line, problem }: Result['integrity'] & { readonly kind: 'damaged' }): string {
+  return `line ${line} of the journal: ${problem}`;
+}
+
+function nothingToJudge(group: string): Case {
+  const text =
+    'Nothing is required of this record, so there is nothing to judge: it has neither passed nor failed.';
+  return { name: 'nothing is required', group, came: { kind: 'skipped', text } };
+}
+
+function decided(decision: Decision, finding: Finding | undefined): Came {
+  const { outcome } = decision;
+  const text = reasons(decision, finding);
+  return outcome === 'conforms'
+    ? { kind: 'passed', text }
+    : { kind: 'failure', type: outcome, message: text };
+}
+
+/** `5.088 ± 0.018 A (95 %: 5.070 A to 5.106 A); required: at least 6 A; conformance probability below 0.1 %`. */
+function reasons({ requirement, probability, note }: Decision, finding: Finding | undefined): string {
+  return [
+    ...(finding === undefined ? [] : [valueOf(finding)]),
+    `required: ${requirement}`,
+    ...(probability === null ? [] : [`conformance probability ${probabilityInWords(probability)}`]),
+    ...(note === '' ? [] : [note]),
+  ].join('; ');
+}
+
+function valueOf(finding: Finding): string {
+  const { value, dimension, interval, bound } = finding;
+  const least = bound === 'least' ? 'at least ' : '';
+  if (typeof value === 'string' || dimension === null || interval?.every(Number.isFinite) !== true)
+    return `${least}${inOneLine(finding).trim()}`;
+  const { low, high, unit } = formatInterval(value, interval[0], interval[1], dimension);
+  return `${least}${inOneLine(finding)} (95 %: ${low} ${unit} to ${high} ${unit})`;
+}
