@@ -13,7 +13,11 @@ export interface RunOptions {
   readonly yes?: boolean;
   readonly dryRun?: boolean;
   readonly trace?: boolean;
+  /** Where the decisions go as JUnit XML. */
+  readonly junit?: string;
   readonly json?: boolean;
+  /** Serve pages on which the run is looked at, answered and stopped. */
+  readonly view?: boolean;
 }
 
 /** A run from its beginning, or from where another was broken off. */
@@ -37,6 +41,16 @@ export class RunUsageError extends RailproofError {
 /** @throws RunUsageError */
 export function runWanted(options: RunOptions): RunWanted {
   const { procedure, bench, module: modules, resume, baseline, tolerance } = options;
+  if (options.junit !== undefined && options.dryRun === true) {
+    throw new RunUsageError('railproof run: --junit and --dry-run do not go together', {
+      advice: 'nothing is performed and nothing is judged with --dry-run: leave one of the two out',
+    });
+  }
+  if (options.view === true && options.dryRun === true) {
+    throw new RunUsageError('railproof run: --view and --dry-run do not go together', {
+      advice: 'nothing is performed with --dry-run, so there is nothing to look at: leave one of the two out',
+    });
+  }
   if (resume !== undefined) {
     refuseBesideResume({
       '<procedure>': procedure,
