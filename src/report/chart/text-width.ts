@@ -26,3 +26,15 @@ export function cutToWidth(text: string, width: number): string {
   while (signs.length > 0 && textWidth(`${signs.join('')}…`) > width) signs.pop();
   return `${signs.join('')}…`;
 }
+
+/** In lines no wider than this, broken between words; a longer word is cut. */
+export function wrapToWidth(text: string, width: number): readonly string[] {
+  const lines: string[] = [];
+  for (const word of text.split(' ')) {
+    const last = lines.at(-1);
+    const longer = last === undefined ? word : `${last} ${word}`;
+    if (last !== undefined && textWidth(longer) <= width) lines[lines.length - 1] = longer;
+    else lines.push(cutToWidth(word, width));
+  }
+  return lines;
+}
