@@ -73,8 +73,13 @@ export function pageText({ kind, title, answer, sections, made, pageKind }: Page
 
 /** A section with its heading, reachable by it; nothing where nothing is in it. */
 export function section(heading: string, ...content: readonly Content[]): Markup {
-  const id = heading.toLowerCase().replace(/[^a-z0-9]+/g, '-');
+  const id = idOf(heading);
   return element('section', { 'aria-labelledby': id }, element('h2', { id }, heading), content);
+}
+
+/** By which a section is reached, within the page. */
+export function idOf(heading: string): string {
+  return heading.toLowerCase().replace(/[^a-z0-9]+/g, '-');
 }
 
 /** A list of sentences; undefined without any. */
