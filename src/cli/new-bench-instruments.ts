@@ -156,7 +156,7 @@ function sayMet(questions: Questions, met: Met): void {
       questions.say(
         'Nothing answers. Is it switched on, is remote control enabled, and, at a serial port, is the baud rate right ' +
           '(?baud=115200)? Leave it out and give its address again to ask once more; or say what it is, and pick a ' +
-          'driver by hand. TROUBLESHOOTING.md has more under "Nothing answers".',
+          'driver by hand.',
       );
       return;
     case 'unreachable':

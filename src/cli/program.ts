@@ -278,7 +278,6 @@ To begin:
   railproof new bench    asks what is on the bench, or makes one up to try things on
   railproof new module   asks what the label of the module says
   railproof run quick-look --bench bench.yaml --module K1.yaml --dry-run
-What puzzles you at the bench is in TROUBLESHOOTING.md, by symptom.
 `;
 
 const exitStatusHelp = `
