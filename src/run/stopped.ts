@@ -9,7 +9,7 @@ export class StoppedByOperator extends RailproofError {
 /** Nobody can answer at the terminal any more. */
 export class TerminalClosed extends StoppedByOperator {
   constructor() {
-    super('the terminal was closed at a question');
+    super('the terminal was closed at a question', { advice: 'run it in a terminal that stays open' });
   }
 }
 
@@ -37,8 +37,7 @@ export class OperatorAbsentError extends RailproofError {
 
   constructor(steps: readonly string[]) {
     super(`the procedure needs someone at the bench for ${steps.join(', ')} and there is no terminal`, {
-      advice:
-        'run it in a terminal, or with --view, which serves a page to answer on; --yes acknowledges wiring and cautions only',
+      advice: 'run it in a terminal; --yes acknowledges wiring and cautions only',
     });
   }
 }
