@@ -1,3 +1,4 @@
+import { messageOf } from '../errors/message-of.js';
 import { formatAddress } from '../files/connection-address.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { Audience } from './audience.js';
@@ -121,7 +122,7 @@ async function untilConfirmed(attempts: Iterable<() => Promise<void>>, advice: s
       return { kind: 'confirmed' };
     } catch (error) {
       cause = error;
-      why = error instanceof Error ? error.message : String(error);
+      why = messageOf(error);
     }
   }
   return { kind: 'unconfirmed', why, advice, cause };

@@ -37,7 +37,7 @@ export async function analyseRecord(
 ): Promise<ExitCode> {
   const keepJunit = await placeForJunit(wanted.junit);
   const result = understand(wanted.run);
-  await keepJunit(runSuite(result));
+  await keepJunit(() => runSuite(result));
   if (wanted.strict === true && result.integrity.kind !== 'whole') throw new NotWholeError(result);
   streams.stdout.write(shown(result, wanted.json === true, streams));
   streams.stderr.write(resumeHint(wanted.run, result));

@@ -33,7 +33,7 @@ export async function compareRecords(
   const [before, after] = [understand(wanted.earlier), understand(wanted.later)];
   const comparison = compare(sideOf(before), sideOf(after), tolerance.findings);
   const records: ComparedRecords = { before, after, tolerance, comparison };
-  await keepJunit(comparisonSuite(records));
+  await keepJunit(() => comparisonSuite(records));
   const { stdout, environment } = streams;
   if (wanted.json === true) stdout.write(jsonText(comparisonAsJson(records)));
   else show(stdout, comparisonAsText(records, styleFor(stdout, environment), stdout.columns));

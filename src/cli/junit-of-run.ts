@@ -1,5 +1,7 @@
+import { messageOf } from '../errors/message-of.js';
 import { RailproofError } from '../errors/railproof-error.js';
 import { runSuite } from '../report/junit/run-suite.js';
+import type { Suite } from '../report/junit/suite.js';
 import { unfinishedSuite } from '../report/junit/unfinished-suite.js';
 import type { Plan } from '../run/plan.js';
 import { placeForJunit } from './junit-written.js';
@@ -23,14 +25,16 @@ export async function junitOfRun(
 ): Promise<JunitOfRun> {
   const keep = await placeForJunit(path);
   const what = { name: 'a run', procedure: plan.procedure.name, modules: plan.underTest.name };
-  await keep(unfinishedSuite(what, 'not-ended', 'the run has not ended, or ended without a word', wall()));
+  await keep(() =>
+    unfinishedSuite(what, 'not-ended', 'the run has not ended, or ended without a word', wall()),
+  );
   return {
-    notBegun: (error) => keep(unfinishedSuite(what, 'not-begun', textOf(error), wall())),
+    notBegun: (error) => keep(() => unfinishedSuite(what, 'not-begun', messageOf(error), wall())),
     async end({ understood, folder }) {
-      const suite =
+      const suite = (): Suite =>
         understood.kind === 'result'
           ? runSuite(understood.result)
-          : unfinishedSuite({ ...what, name: folder.name }, 'not-read', textOf(understood.error), wall());
+          : unfinishedSuite({ ...what, name: folder.name }, 'not-read', messageOf(understood.error), wall());
       try {
         await keep(suite);
         return undefined;
@@ -40,8 +44,4 @@ export async function junitOfRun(
       }
     },
   };
-}
-
-function textOf(error: unknown): string {
-  return error instanceof Error ? error.message : String(error);
 }

@@ -12,8 +12,8 @@ const junitFile: KeptKind = {
   code: 'JUNIT_NOT_KEPT',
 };
 
-/** Keeps a suite as a JUnit report; where none is wanted it keeps nothing. */
-export type KeepJunit = (suite: Suite) => Promise<void>;
+/** Keeps a suite as a JUnit report; where none is wanted none is worked out. */
+export type KeepJunit = (suite: () => Suite) => Promise<void>;
 
 /**
  * Makes the place ready where a suite is to go: an older report there is taken away, so that it is not taken for
@@ -26,5 +26,5 @@ export async function placeForJunit(path: string | undefined): Promise<KeepJunit
   await rm(path, { force: true }).catch((cause: unknown) => {
     throw new FileNotKeptError(path, junitFile, 'unwritable', cause);
   });
-  return async (suite) => writeKept(path, await junitText([suite]), junitFile);
+  return async (suite) => writeKept(path, await junitText([suite()]), junitFile);
 }

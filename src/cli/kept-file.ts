@@ -1,7 +1,8 @@
 import { closeSync, existsSync, readSync } from 'node:fs';
-import { rename, rm, writeFile } from 'node:fs/promises';
+import { messageOf } from '../errors/message-of.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { openRegular } from '../record/read-whole.js';
+import { writeWhole } from './write-whole.js';
 
 /** A sort of file that is written where the command line says. */
 export interface KeptKind {
@@ -29,7 +30,7 @@ export class FileNotKeptError extends RailproofError {
     const words = {
       'bad-name': `a ${what} is ${named}, and its name ends in ${ending}`,
       'not-ours': `this file is there already and is no ${what}, so it is not written over`,
-      unwritable: `the ${what} can't be written: ${cause instanceof Error ? cause.message : String(cause)}`,
+      unwritable: `the ${what} can't be written: ${messageOf(cause)}`,
     };
     const advice = {
       'bad-name': `name it, for example, ${example}`,
@@ -73,13 +74,9 @@ function isOurs(path: string, { mark }: KeptKind): boolean {
 /** Writes it whole or not at all. @throws FileNotKeptError */
 export async function writeKept(path: string, text: string, kind: KeptKind): Promise<void> {
   checkKept(path, kind);
-  const beside = `${path}.${process.pid}.part`;
   try {
-    await writeFile(beside, text, { flag: 'wx' });
-    await rename(beside, path);
+    await writeWhole(path, text);
   } catch (error) {
-    // Where it can't be taken away it was not written either.
-    await rm(beside, { force: true }).catch(() => undefined);
     throw new FileNotKeptError(path, kind, 'unwritable', error);
   }
 }

@@ -1,9 +1,11 @@
 import { statSync } from 'node:fs';
-import { rename, rm, writeFile } from 'node:fs/promises';
+import { writeFile } from 'node:fs/promises';
 import { dirname } from 'node:path';
+import { messageOf } from '../errors/message-of.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { printable } from '../quantity/printable.js';
 import { type Questions, UnfitAnswerError } from './questions.js';
+import { writeWhole } from './write-whole.js';
 
 /** The file can't be written where it was to go. */
 export class NewNotKeptError extends RailproofError {
@@ -12,7 +14,7 @@ export class NewNotKeptError extends RailproofError {
   readonly path: string;
 
   constructor(path: string, cause: unknown) {
-    super(`${path}: the file can't be written: ${cause instanceof Error ? cause.message : String(cause)}`, {
+    super(`${path}: the file can't be written: ${messageOf(cause)}`, {
       cause,
       advice:
         'name a place where it may be written, for example railproof new bench bench.yaml, and answer again',
@@ -64,16 +66,10 @@ export async function settledPlace(path: string, questions: Questions): Promise<
 
 /** Whole or not at all; over another file only where that was wanted. @throws NewNotKeptError */
 export async function writeNew({ path, isThere }: NewPlace, text: string): Promise<void> {
-  const beside = `${path}.${process.pid}.part`;
   try {
-    if (!isThere) {
-      await writeFile(path, text, { flag: 'wx' });
-      return;
-    }
-    await writeFile(beside, text, { flag: 'wx' });
-    await rename(beside, path);
+    if (isThere) await writeWhole(path, text);
+    else await writeFile(path, text, { flag: 'wx' });
   } catch (error) {
-    await rm(beside, { force: true }).catch(() => undefined);
     throw new NewNotKeptError(path, error);
   }
 }

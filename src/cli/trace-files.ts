@@ -1,5 +1,6 @@
 import { closeSync, openSync, rmSync, statfsSync, writeFileSync, writeSync } from 'node:fs';
 import { join } from 'node:path';
+import { messageOf } from '../errors/message-of.js';
 import { dialogueHeader, dialogueLine } from '../instrument/dialogue-record.js';
 import type { TraceOf } from '../instrument/traced-connection.js';
 import { answerLine, answersHeader, type RecordedAnswer } from '../run/answers-record.js';
@@ -114,7 +115,7 @@ export class TraceFiles {
     try {
       work();
     } catch (error) {
-      this.#giveUp(error instanceof Error ? error.message : String(error));
+      this.#giveUp(messageOf(error));
     }
   }
 

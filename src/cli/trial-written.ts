@@ -1,6 +1,7 @@
 import { existsSync } from 'node:fs';
 import { writeFile } from 'node:fs/promises';
 import { basename } from 'node:path';
+import { messageOf } from '../errors/message-of.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { adaptedDriver, type Adaptation } from '../files/adapted-driver.js';
 import type { Driver } from '../files/driver.js';
@@ -20,11 +21,11 @@ export class TrialNotKeptError extends RailproofError {
     const words = {
       'bad-name': 'this is no name for a driver: 1 to 64 letters, digits, ".", "_" or "-"',
       exists: 'this file is there already, and is not written over',
-      unwritable: `it cannot be written: ${cause instanceof Error ? cause.message : String(cause)}`,
+      unwritable: `it cannot be written: ${messageOf(cause)}`,
     };
     const advice =
       reason === 'unwritable'
-        ? 'make room there, or name a place where it may be written: --write /tmp/my-load'
+        ? 'make room there, or name a place where it may be written: --write elsewhere/my-load'
         : 'give another name: --write my-load';
     super(`${path}: ${words[reason]}`, { cause, advice });
     this.exitCode = reason === 'unwritable' ? exitCodes.inputOutput : exitCodes.usage;

@@ -1,6 +1,7 @@
 import { orderText, type Order } from '../bench/watchman-order.js';
 import { beatEvery } from '../bench/watchman-vigil.js';
 import type { InputListener } from '../bench/load.js';
+import { messageOf } from '../errors/message-of.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { startWatchmanProcess, type WatchmanProcess } from './watchman-process.js';
 
@@ -79,7 +80,7 @@ export class Watchman {
     try {
       await process.order(order);
     } catch (error) {
-      this.#missing.abort(new NoWatchmanError(error instanceof Error ? error.message : String(error)));
+      this.#missing.abort(new NoWatchmanError(messageOf(error)));
       return false;
     }
     void process.ended.then((how) => this.#lost(how));

@@ -1,3 +1,4 @@
+import { messageOf } from '../errors/message-of.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 
 /** The record could not be written: no space, no permission, the disk gone. */
@@ -76,5 +77,5 @@ const reasons: Readonly<Record<string, string>> = {
 function reasonOf(cause: unknown): string {
   const code = (cause as { code?: unknown } | undefined)?.code;
   if (typeof code === 'string') return reasons[code] ?? code;
-  return cause instanceof Error ? cause.message : String(cause);
+  return messageOf(cause);
 }

@@ -1,3 +1,4 @@
+import { messageOf } from '../errors/message-of.js';
 import type { EventClock } from '../clock/event-clock.js';
 import type { Operator } from '../steps/operator.js';
 import type { RecordedAnswer } from './answers-record.js';
@@ -21,7 +22,7 @@ export function tracedOperator(
         note({ t: clock.happens(), asked: request.name, answered });
         return answered;
       } catch (error) {
-        const stopped = error instanceof Error ? error.message : String(error);
+        const stopped = messageOf(error);
         note({ t: clock.happens(), asked: request.name, stopped });
         throw error;
       }

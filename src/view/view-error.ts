@@ -1,3 +1,4 @@
+import { messageOf } from '../errors/message-of.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 
 /** The live view can't be served: no port on loopback, or the page is not there. Nothing was begun. */
@@ -6,7 +7,7 @@ export class LiveViewError extends RailproofError {
   readonly exitCode = exitCodes.inputOutput;
 
   constructor(cause: unknown) {
-    super(`the live view can't be served: ${cause instanceof Error ? cause.message : String(cause)}`, {
+    super(`the live view can't be served: ${messageOf(cause)}`, {
       advice:
         'nothing was switched on; run it without --view, and the terminal shows and asks the same, or see that programs may listen on 127.0.0.1 here',
       cause,

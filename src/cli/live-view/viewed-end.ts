@@ -1,3 +1,4 @@
+import { messageOf } from '../../errors/message-of.js';
 import { answer } from '../../report/answer.js';
 import type { ViewedEnd } from '../../view/view-state.js';
 import type { PlanPerformed } from '../perform-plan.js';
@@ -12,7 +13,7 @@ export function viewedEnd(performed: PlanPerformed): ViewedEnd {
     ...(understood.kind === 'result'
       ? { answer: answer(understood.result), outcome: understood.result.outcome }
       : {
-          answer: [`What the record shows could not be told: ${wordsOf(understood.error)}`],
+          answer: [`What the record shows could not be told: ${messageOf(understood.error)}`],
           outcome: 'not-judged',
         }),
     safety: safetyWords(performed),
@@ -22,9 +23,12 @@ export function viewedEnd(performed: PlanPerformed): ViewedEnd {
 
 /** One that did not come to a record: the bench could not be opened, say, and nothing was switched on. */
 export function notBegun(error: unknown): ViewedEnd {
-  return { how: 'failed', reason: wordsOf(error), answer: [], outcome: 'not-judged', safety: [], record: '' };
-}
-
-function wordsOf(error: unknown): string {
-  return error instanceof Error ? error.message : String(error);
+  return {
+    how: 'failed',
+    reason: messageOf(error),
+    answer: [],
+    outcome: 'not-judged',
+    safety: [],
+    record: '',
+  };
 }
