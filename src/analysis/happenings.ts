@@ -1,3 +1,4 @@
+import { cutText } from '../quantity/cut-text.js';
 import type { Seconds } from '../quantity/quantity.js';
 
 /** Something that happened on the way, besides readings: the same thing in the same step is one, and counted. */
@@ -64,9 +65,7 @@ export class HappeningCollector {
   }
 }
 
-/** Never through a sign. */
 function cut(text: string): string {
   if (text.length <= longestText) return text;
-  const isHalf = /[\uD800-\uDBFF]$/.test(text.slice(0, longestText));
-  return `${text.slice(0, isHalf ? longestText - 1 : longestText)}… (shortened; the journal has all of it)`;
+  return `${cutText(text, longestText)}… (shortened; the journal has all of it)`;
 }

@@ -1,4 +1,5 @@
 import type { Bench } from '../files/bench.js';
+import { wiringFor } from '../run/cautions.js';
 import { needsOperator } from '../run/plan-circuit.js';
 import { OperatorAbsentError } from '../run/stopped.js';
 import { TerminalOperator } from '../run/terminal-operator.js';
@@ -40,8 +41,7 @@ export function requireOperator({ plan, resumed }: LoadedPlan, operator: Operato
   const needing = plan.steps.flatMap((step, index) =>
     index >= done && needsOperator(step, plan.bench) ? [`step ${index + 1} (${step.kind.kind})`] : [],
   );
-  const wiring = [...plan.procedure.wiring, ...(resumed?.from.standing ?? [])];
-  if (!yes && wiring.length > 0) needing.push('its wiring');
+  if (!yes && wiringFor(plan.procedure, resumed?.from).length > 0) needing.push('its wiring');
   if (!yes && plan.cautions.length > 0) needing.push('its cautions');
   if (needing.length > 0) throw new OperatorAbsentError(needing);
 }

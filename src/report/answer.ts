@@ -1,5 +1,6 @@
 import { type Finding, findingNamed } from '../analysis/finding.js';
 import { compareWithBaseline } from '../judgement/compare.js';
+import { capitalised } from '../quantity/capitalised.js';
 import { roundedDown } from '../quantity/rounded-down.js';
 import { changesInWords } from './changes.js';
 import { inOneLine } from './finding-text.js';
@@ -69,10 +70,6 @@ function why(usable: Finding): string {
   return (usable.interval?.[0] ?? 0) > 0
     ? `It delivers ${usable.bound === 'least' ? 'at least ' : ''}${inOneLine(usable)}; ${usable.note}.`
     : `${capitalised(usable.note)}.`;
-}
-
-function capitalised(sentence: string): string {
-  return `${sentence.charAt(0).toUpperCase()}${sentence.slice(1)}`;
 }
 
 /** Which finding moved since the baseline, where there is one, and by how much. */

@@ -1,5 +1,6 @@
 import { named } from '../steps/isolation-prompts.js';
 import { cautionTexts } from '../record/caution-texts.js';
+import type { TakenOver } from './taken-over.js';
 import type { UnderTest } from '../steps/under-test.js';
 import type { Module } from '../files/module.js';
 import type { CautionName, Procedure } from '../files/procedure.js';
@@ -21,6 +22,14 @@ export function cautionsFor(
       ...(modules.some(earthWasWorkedOn) ? (['earth-link-removed'] as const) : []),
     ]),
   ];
+}
+
+/** What is to be wired before anything is switched on; of a run that goes on, also as it was left to stand. */
+export function wiringFor(
+  { wiring }: Pick<Procedure, 'wiring'>,
+  from: Pick<TakenOver, 'standing'> | undefined,
+): readonly string[] {
+  return [...wiring, ...(from?.standing ?? [])];
 }
 
 /**

@@ -11,7 +11,7 @@ import type { Carried, JournalEvent } from '../record/journal-event.js';
 import type { Operator } from '../steps/operator.js';
 import { startUp } from '../steps/start-up.js';
 import type { Progress, StepContext, Tried } from '../steps/step-kind.js';
-import { cautionOf } from './cautions.js';
+import { cautionOf, wiringFor } from './cautions.js';
 import type { Plan } from './plan.js';
 import { StoppedByOperator, UnforeseenError } from './stopped.js';
 import type { TakenOver } from './taken-over.js';
@@ -142,7 +142,7 @@ function noteTrip({ journal }: Performance, trip: Trip): void {
 async function begin({ plan, bench, journal, operator, signal, from }: Performance): Promise<void> {
   await checkAllIsOff(bench);
   await checkMeters(bench);
-  const wiring = [...plan.procedure.wiring, ...(from?.standing ?? [])];
+  const wiring = wiringFor(plan.procedure, from);
   if (wiring.length > 0) {
     const acknowledged = await operator.acknowledge('wiring', wiring.join('\n'), signal);
     if (acknowledged === 'refused') throw new StoppedByOperator('the wiring was not acknowledged');

@@ -1,3 +1,4 @@
+import { capitalised } from '../../quantity/capitalised.js';
 import type { OperatorRequest } from '../../steps/operator.js';
 import type { Asked } from '../../view/questions.js';
 
@@ -6,7 +7,7 @@ export function acknowledgementAsked(caution: string, text: string): Asked {
   const heading =
     caution === 'wiring'
       ? 'Is it wired so, with nothing switched on yet?'
-      : `${capital(inWords(caution))}: understood and taken care of?`;
+      : `${capitalised(inWords(caution))}: understood and taken care of?`;
   return { heading, text, answer: 'yes' };
 }
 
@@ -18,8 +19,4 @@ export function requestAsked({ name, text, answer }: OperatorRequest): Asked {
 
 function inWords(name: string): string {
   return name.replaceAll('-', ' ');
-}
-
-function capital(text: string): string {
-  return text.charAt(0).toUpperCase() + text.slice(1);
 }

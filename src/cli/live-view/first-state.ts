@@ -1,4 +1,4 @@
-import { cautionOf } from '../../run/cautions.js';
+import { cautionOf, wiringFor } from '../../run/cautions.js';
 import { timeLeft } from '../../run/time-left.js';
 import type { ViewedCaution, ViewState } from '../../view/view-state.js';
 import type { LoadedPlan } from '../load-plan.js';
@@ -38,7 +38,7 @@ function cautionsShown(
   { procedure, cautions, underTest }: LoadedPlan['plan'],
   resumed: LoadedPlan['resumed'],
 ): readonly ViewedCaution[] {
-  const wiring = [...procedure.wiring, ...(resumed?.from.standing ?? [])];
+  const wiring = wiringFor(procedure, resumed?.from);
   return [
     ...(wiring.length === 0 ? [] : [{ name: 'wiring', text: wiring.join('\n'), by: undefined }]),
     ...cautions.map((name) => ({ name, text: cautionOf(name, underTest), by: undefined })),

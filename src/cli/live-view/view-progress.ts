@@ -1,4 +1,5 @@
 import { PointCollector } from '../../analysis/point-evidence.js';
+import { cutText } from '../../quantity/cut-text.js';
 import type { JournalEvent, PointEnded } from '../../record/journal-event.js';
 import type { RunningMoments } from '../../statistics/running-moments.js';
 import type { LiveView } from '../../view/server.js';
@@ -53,7 +54,7 @@ export function viewProgress(run: RunSoFar, { show, state }: Pick<LiveView, 'sho
       recorded(event);
     },
     noticed(text) {
-      show({ kind: 'notice', notice: { t: run.elapsed, text: text.slice(0, longestNotice) } });
+      show({ kind: 'notice', notice: { t: run.elapsed, text: cutText(text, longestNotice) } });
     },
     end() {
       clearInterval(timer);

@@ -3,6 +3,7 @@ import type { Evidence } from '../../analysis/evidence.js';
 import { type Finding, findingNamed } from '../../analysis/finding.js';
 import { overloadsOf } from '../../analysis/limit-style.js';
 import type { LimitTrace, TracedAt } from '../../analysis/limit-trace.js';
+import { capitalised } from '../../quantity/capitalised.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
 import type { Watts } from '../../quantity/quantity.js';
 import { extremesOf } from '../chart/axis.js';
@@ -179,16 +180,12 @@ function caption(style: Finding | undefined, power: Watts | undefined): string {
   const said =
     style === undefined
       ? 'What is drawn does not tell how it limits.'
-      : `${capital(String(style.value))}: ${style.note}.`;
+      : `${capitalised(String(style.value))}: ${style.note}.`;
   const constant =
     power === undefined
       ? ''
       : ` The curve is a constant ${watts(power)}; what stays in the shaded band round it counts as constant.`;
   return `${said}${constant}`;
-}
-
-function capital(text: string): string {
-  return text.charAt(0).toUpperCase() + text.slice(1);
 }
 
 function watts(value: Watts): string {
