@@ -1,5 +1,5 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Amperes, Celsius, Kelvins, Ratio, Volts } from '../quantity/quantity.js';
+import type { Amperes, Celsius, Dimension, Kelvins, Ratio, Volts } from '../quantity/quantity.js';
 
 // How a note writes a number: to the digits that a reader can use, not to those that a finding has.
 
@@ -26,15 +26,14 @@ export function degrees(temperature: Celsius): string {
 }
 
 /** What a label or a file says, as it says it; sums of labels without the digits that adding makes. */
+export function asGiven(value: number, dimension: Dimension): string {
+  return formatQuantity(Number(value.toPrecision(6)), dimension);
+}
+
 export function ratedAmperes(current: Amperes): string {
-  return formatQuantity(asWritten(current), 'current');
+  return asGiven(current, 'current');
 }
 
-/** The same of a share. */
 export function givenPercent(ratio: Ratio): string {
-  return formatQuantity(asWritten(ratio), 'ratio');
-}
-
-function asWritten(value: number): number {
-  return Number(value.toPrecision(6));
+  return asGiven(ratio, 'ratio');
 }

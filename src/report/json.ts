@@ -1,5 +1,6 @@
 import type { Finding } from '../analysis/finding.js';
 import { toJsonUnit, ucumCode } from '../quantity/ucum.js';
+import { modulesInWords } from './record-heading.js';
 import { endedHow, type Result } from './result.js';
 import { takenOver } from './taken-over.js';
 
@@ -15,7 +16,7 @@ export function resultAsJson(result: Result): object {
   return {
     format: resultFormat,
     run: result.run,
-    module: result.header.modules.map(({ name }) => name).join('+'),
+    module: modulesInWords(result.header),
     ...circuitAsJson(result),
     procedure: result.header.procedure.name,
     ...baselineAsJson(result),

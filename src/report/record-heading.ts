@@ -1,6 +1,6 @@
 import type { Evidence } from '../analysis/evidence.js';
+import { asGiven } from '../analysis/in-words.js';
 import { ratedOf } from '../analysis/rated.js';
-import { formatQuantity } from '../quantity/format-quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { inMinutes } from './in-minutes.js';
 import { takenOver } from './taken-over.js';
@@ -34,9 +34,7 @@ export function plateInWords({
   readonly voltage: number;
   readonly current: number;
 }): string {
-  // Sums of labels without the digits that adding makes.
-  const said = (value: number): number => Number(value.toPrecision(6));
-  return `${formatQuantity(said(voltage), 'voltage')}, ${formatQuantity(said(current), 'current')}`;
+  return `${asGiven(voltage, 'voltage')}, ${asGiven(current, 'current')}`;
 }
 
 export function againstWhat({ baseline }: Pick<RunHeader, 'baseline'>): readonly string[] {

@@ -1,10 +1,4 @@
-import { dark, light, type Palette } from '../report/page/look.js';
-
-const variables = ({ lines, ...colours }: Palette): string =>
-  [
-    ...Object.entries(colours).map(([name, colour]) => `--${name}:${colour}`),
-    ...lines.map((colour, index) => `--line-${index}:${colour}`),
-  ].join(';');
+import { dark, light, variables } from '../report/page/look.js';
 
 /**
  * The look of the live view: the report's paper, while it is being written. Figures are set like the entries of a

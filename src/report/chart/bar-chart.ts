@@ -1,8 +1,8 @@
 import type { Dimension } from '../../quantity/quantity.js';
 import { element, type Markup } from '../page/markup.js';
-import { axisOf, domainOf } from './axis.js';
 import { type ChartWords, type Frame, framed } from './frame.js';
-import { roomForMarks, type VerticalMark, verticalMarks } from './marks.js';
+import { type VerticalMark, verticalMarks } from './marks.js';
+import { barHeight, rowsFrame, rowsWidth } from './rows-frame.js';
 import { cutToWidth, lineHeight, textWidth } from './text-width.js';
 
 /** One bar below the other, each from somewhere to somewhere on one axis, with its words above it. */
@@ -22,23 +22,13 @@ export interface Bar {
   readonly look?: number;
 }
 
-const width = 560;
-const barHeight = 14;
 const rowHeight = barHeight + lineHeight + 10;
-const left = 6;
 
 export function barChart(chart: BarChart): Markup {
   const { bars, marks = [] } = chart;
-  const { to } = domainOf([...bars.map((bar) => bar.to), ...marks.map(({ at }) => at)], 0);
-  const x = axisOf({ ...chart.x, from: 0, to }, [left, width - 14], 8);
-  const top = 8 + roomForMarks(marks, x, width);
-  const bottom = top + bars.length * rowHeight + 4;
-  const frame: Frame = {
-    width,
-    height: bottom + 22 + lineHeight + 6,
-    x,
-    y: { label: '', at: () => bottom, start: bottom, end: top, ticks: [] },
-  };
+  const ends = bars.map((bar) => bar.to);
+  const frame = rowsFrame(chart.x, ends, marks, (from) => from + bars.length * rowHeight + 4);
+  const top = frame.y.end;
   return framed(
     chart,
     frame,
@@ -55,9 +45,9 @@ function drawn(
 ): Markup {
   const start = x.at(Math.min(from, to));
   const length = Math.max(2, x.at(Math.max(from, to)) - start);
-  const shown = cutToWidth(name, Math.max(60, width - textWidth(says) - 20));
+  const shown = cutToWidth(name, Math.max(60, rowsWidth - textWidth(says) - 20));
   const whole = textWidth(shown) + 8 + textWidth(says);
-  const place = Math.max(0, Math.min(start, width - whole));
+  const place = Math.max(0, Math.min(start, rowsWidth - whole));
   return element(
     'g',
     { class: `s${look}` },

@@ -1,8 +1,9 @@
 import type { Dimension } from '../../quantity/quantity.js';
 import { element, type Markup, short } from '../page/markup.js';
-import { type Axis, axisOf, domainOf } from './axis.js';
-import { type ChartWords, type Frame, framed } from './frame.js';
-import { roomForMarks, type VerticalMark, verticalMarks } from './marks.js';
+import type { Axis } from './axis.js';
+import { type ChartWords, framed } from './frame.js';
+import { type VerticalMark, verticalMarks } from './marks.js';
+import { barHeight, rowsFrame, rowsLeft, rowsWidth } from './rows-frame.js';
 import { cutToWidth, lineHeight, textWidth, wrapToWidth } from './text-width.js';
 
 /** A value that steps bring down one after the other: each begins where the one before it ended. */
@@ -24,11 +25,11 @@ export interface Fall {
   readonly kind: 'step' | 'whole';
 }
 
-const width = 560;
-const barHeight = 14;
-const left = 6;
 /** Within a row, below its words; and below all of it. */
 const [gap, below] = [4, 12];
+
+/** What takes nothing away is a line and no bar. */
+const narrowest = 1.5;
 
 interface Row extends Fall {
   readonly top: number;
@@ -37,25 +38,16 @@ interface Row extends Fall {
 
 export function fallingChart(chart: FallingChart): Markup {
   const { falls, marks = [] } = chart;
-  const { to } = domainOf(
-    [...falls.flatMap((fall) => [fall.from, fall.to]), ...marks.map(({ at }) => at)],
-    0,
-  );
-  const x = axisOf({ ...chart.x, from: 0, to }, [left, width - 14], 8);
-  const first = 8 + roomForMarks(marks, x, width);
   const rows: Row[] = [];
-  let top = first;
-  for (const fall of falls) {
-    const lines = fall.because === '' ? [] : wrapToWidth(fall.because, width - left);
-    rows.push({ ...fall, top, lines });
-    top += lineHeight + gap + barHeight + lines.length * lineHeight + below;
-  }
-  const frame: Frame = {
-    width,
-    height: top + 22 + lineHeight + 6,
-    x,
-    y: { label: '', at: () => top, start: top, end: first, ticks: [] },
-  };
+  const laid = (first: number): number =>
+    falls.reduce((top, fall) => {
+      const lines = fall.because === '' ? [] : wrapToWidth(fall.because, rowsWidth - rowsLeft);
+      rows.push({ ...fall, top, lines });
+      return top + lineHeight + gap + barHeight + lines.length * lineHeight + below;
+    }, first);
+  const values = falls.flatMap((fall) => [fall.from, fall.to]);
+  const frame = rowsFrame(chart.x, values, marks, laid);
+  const { x } = frame;
   return framed(
     chart,
     frame,
@@ -87,7 +79,7 @@ function drawn(row: Row, x: Axis): Markup {
   const [start, end] = kind === 'whole' ? [x.at(0), x.at(to)] : [x.at(to), x.at(from)];
   const top = barTop(row);
   const baseline = row.top + lineHeight;
-  const shown = cutToWidth(name, Math.max(60, width - textWidth(says) - 20));
+  const shown = cutToWidth(name, Math.max(60, rowsWidth - textWidth(says) - 20));
   return element(
     'g',
     { class: kind === 'whole' ? 's0' : 's1' },
@@ -97,19 +89,16 @@ function drawn(row: Row, x: Axis): Markup {
       : element('rect', { class: 'bar', x: start, y: top, width: end - start, height: barHeight }),
     element(
       'text',
-      { class: 'halo', x: left, y: baseline },
+      { class: 'halo', x: rowsLeft, y: baseline },
       element('tspan', { class: 'name' }, shown),
       element('tspan', { dx: 8 }, says),
     ),
     lines.map((line, index) =>
       element(
         'text',
-        { class: 'unit halo', x: left, y: top + barHeight + (index + 1) * lineHeight - 2 },
+        { class: 'unit halo', x: rowsLeft, y: top + barHeight + (index + 1) * lineHeight - 2 },
         line,
       ),
     ),
   );
 }
-
-/** What takes nothing away is a line and no bar. */
-const narrowest = 1.5;

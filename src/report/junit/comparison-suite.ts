@@ -6,6 +6,7 @@ import {
 } from '../../judgement/change-in-words.js';
 import { changesMissed, type Compared } from '../../judgement/compare.js';
 import { type ComparedRecords, outcomeOf } from '../comparison.js';
+import { modulesInWords } from '../record-heading.js';
 import { probabilityInWords } from '../record-words.js';
 import type { Result } from '../result.js';
 import { propertiesOf, troubles } from './run-suite.js';
@@ -18,7 +19,7 @@ import type { Came, Case, Suite } from './suite.js';
  */
 export function comparisonSuite(records: ComparedRecords): Suite {
   const { before, after, tolerance, comparison } = records;
-  const group = `${after.header.modules.map(({ name }) => name).join('+')}.${tolerance.name}`;
+  const group = `${modulesInWords(after.header)}.${tolerance.name}`;
   const judged = comparison.findings.flatMap((compared): Case[] => {
     const { finding, expected, outcome } = compared;
     if (outcome === 'not-judged' || expected === undefined) return [];

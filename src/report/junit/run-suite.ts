@@ -2,6 +2,7 @@ import { type Finding, findingNamed } from '../../analysis/finding.js';
 import type { Decision } from '../../judgement/judge.js';
 import { formatInterval } from '../../quantity/format-quantity.js';
 import { inOneLine } from '../finding-text.js';
+import { modulesInWords } from '../record-heading.js';
 import { journalInWords, probabilityInWords } from '../record-words.js';
 import { endedHow, type Result } from '../result.js';
 import { takenOver } from '../taken-over.js';
@@ -34,19 +35,19 @@ export function runSuite(result: Result): Suite {
 }
 
 /** What was under test, and by which procedure. */
-function groupOf({ header: { modules, procedure } }: Result): string {
-  return `${modules.map(({ name }) => name).join('+')}.${procedure.name}`;
+function groupOf({ header }: Result): string {
+  return `${modulesInWords(header)}.${header.procedure.name}`;
 }
 
 /** What a reader of the file alone must know of the record. */
 export function propertiesOf(result: Result): Suite['properties'] {
   const { header, evidence, integrity, outcome, run } = result;
-  const { modules, circuit, procedure, bench, program, instruments, baseline } = header;
+  const { circuit, procedure, bench, program, instruments, baseline } = header;
   const { how } = endedHow(result);
   return [
     ['record', run],
     ['program', `${program.name} ${program.version}`],
-    ['module', modules.map(({ name }) => name).join('+')],
+    ['module', modulesInWords(header)],
     ['circuit', circuit],
     ['procedure', procedure.name],
     ['bench', bench.name],

@@ -48,7 +48,8 @@ export const dark: Palette = {
 /** Lines that follow each other differ by their dashes as well; the first is whole. */
 export const dashes = ['none', '7 3', '2 3', '10 3 2 3', '5 2 1 2 1 2', '1 2'] as const;
 
-const variables = ({ lines, ...colours }: Palette): string =>
+/** The palette as the variables by which styles name its colours. */
+export const variables = ({ lines, ...colours }: Palette): string =>
   [
     ...Object.entries(colours).map(([name, colour]) => `--${name}:${colour}`),
     ...lines.map((colour, index) => `--line-${index}:${colour}`),

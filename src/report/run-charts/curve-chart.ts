@@ -1,5 +1,6 @@
 import { type CurveSeen, curveSeen } from '../../analysis/curve-seen.js';
 import { findingNamed } from '../../analysis/finding.js';
+import { asGiven } from '../../analysis/in-words.js';
 import { ratedOf } from '../../analysis/rated.js';
 import { lineAt, type RegulationLine } from '../../analysis/regulation-line.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
@@ -13,7 +14,7 @@ import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
 import { figure } from '../sheet/figure.js';
 import { droppedPoints, heldSorts, idleSort } from './curve-points.js';
-import { amps, foundInWords, rated, volts } from './in-words.js';
+import { amps, foundInWords, volts } from './in-words.js';
 
 /** A line and its interval are bent: so many places of it are reckoned. */
 const places = 61;
@@ -34,7 +35,7 @@ export function curveFigure(result: Result): Markup | undefined {
   const lines = linesOf(seen);
   const marks = [
     ...currentMarks(result, seen),
-    { at: plate.current, label: `rated ${rated(plate.current, 'current')}` },
+    { at: plate.current, label: `rated ${asGiven(plate.current, 'current')}` },
   ];
   const [, furthest] = extremesOf([
     ...sorts.flatMap(({ points }) => points.map(({ x }) => x)),
@@ -68,7 +69,7 @@ function withDropped(
 ): { readonly axis: readonly Level[]; readonly sorts: readonly PointSort[]; readonly isBelow: boolean } {
   const [low, high] = extremesOf(held.flatMap(({ points }) => points.map(({ y }) => y)));
   const isNear = ratedVoltage > low - nearby * high && ratedVoltage < high + nearby * high;
-  const axis = isNear ? [{ at: ratedVoltage, name: `rated ${rated(ratedVoltage, 'voltage')}` }] : [];
+  const axis = isNear ? [{ at: ratedVoltage, name: `rated ${asGiven(ratedVoltage, 'voltage')}` }] : [];
   const floor = low - Math.max(nearby * high, high - low);
   const isHigh = ({ y }: ChartPoint): boolean => !(y < floor);
   const far = dropped
@@ -174,7 +175,7 @@ function inWords(
       const value = findingNamed(findings, 'recommended-current')?.value;
       return typeof value === 'number' ? [`Recommended: ${roundedDown(value, 'current')}.`] : [];
     })(),
-    `The label says ${rated(plate.voltage, 'voltage')} and ${rated(plate.current, 'current')}.`,
+    `The label says ${asGiven(plate.voltage, 'voltage')} and ${asGiven(plate.current, 'current')}.`,
   ];
 }
 

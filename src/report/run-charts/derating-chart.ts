@@ -1,4 +1,5 @@
 import { type Factor, type Finding, findingNamed } from '../../analysis/finding.js';
+import { asGiven } from '../../analysis/in-words.js';
 import { ratedOf } from '../../analysis/rated.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
 import type { Amperes, Ratio } from '../../quantity/quantity.js';
@@ -7,7 +8,7 @@ import { type Fall, fallingChart } from '../chart/falling-chart.js';
 import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
 import { figure } from '../sheet/figure.js';
-import { amps, rated } from './in-words.js';
+import { amps } from './in-words.js';
 
 const title = 'From the measured limit to the recommendation';
 
@@ -29,7 +30,7 @@ export function deratingFigure({ findings, header }: Result): Markup | undefined
       description: inWords(falls, plate),
       x: { label: 'Current', dimension: 'current' },
       falls,
-      marks: [{ at: plate, label: `nameplate ${rated(plate, 'current')}` }],
+      marks: [{ at: plate, label: `nameplate ${asGiven(plate, 'current')}` }],
     }),
     `Each bar is what its step takes away, and the next begins where it ends. The recommendation is the product of ` +
       `all factors and the usable current, rounded down: ${recommended.note}.`,

@@ -1,7 +1,7 @@
 import type { StepEvidence } from '../../analysis/evidence.js';
 import type { Finding } from '../../analysis/finding.js';
 import { formatInterval, formatQuantity } from '../../quantity/format-quantity.js';
-import type { Amperes, Celsius, Dimension, Volts } from '../../quantity/quantity.js';
+import type { Amperes, Dimension, Volts } from '../../quantity/quantity.js';
 
 export function amps(value: Amperes): string {
   return formatQuantity(value, 'current', { significant: 4 });
@@ -10,15 +10,6 @@ export function amps(value: Amperes): string {
 /** To five digits: of 15 V that is a millivolt. */
 export function volts(value: Volts): string {
   return formatQuantity(value, 'voltage', { significant: 5 });
-}
-
-export function degrees(value: Celsius): string {
-  return formatQuantity(Math.round(value * 10) / 10, 'temperature');
-}
-
-/** What a label says, and what labels add up to, without the digits that adding makes. */
-export function rated(value: number, dimension: Dimension): string {
-  return formatQuantity(Number(value.toPrecision(6)), dimension);
 }
 
 /** A finding's value with its interval: `5.30 A, 95 % from 5.28 to 5.32 A`; at least, where it is a bound. */

@@ -1,6 +1,7 @@
 import { temperatureLimit } from '../../analysis/derating.js';
 import type { Evidence } from '../../analysis/evidence.js';
 import { type Finding, findingNamed } from '../../analysis/finding.js';
+import { degrees } from '../../analysis/in-words.js';
 import { onTheWay, type SettledTemperature } from '../../analysis/settled-temperature.js';
 import { ambientOfSoak, governingSoak } from '../../analysis/soak.js';
 import type { SoakSeen } from '../../analysis/soak-seen.js';
@@ -13,7 +14,7 @@ import type { Markup } from '../page/markup.js';
 import { together } from '../page/markup.js';
 import type { Result } from '../result.js';
 import { figure } from '../sheet/figure.js';
-import { amps, degrees, foundInWords, volts } from './in-words.js';
+import { amps, foundInWords, volts } from './in-words.js';
 
 /** Time constants after which less than a hundredth of the rise is left. */
 const toSettle = 5;
