@@ -32,10 +32,11 @@ async function inTerminal(steps: string, begun: RegExp) {
     ...[process.execPath, program, 'run', path('procedure'), '--bench', served.bench, '--yes'],
     ...['--module', 'fixtures/modules/K1.yaml', '--runs', path('runs')],
   ];
-  // The shell is told that the terminal is gone, passes it on, and outlives the run to tell how it ended.
+  // The shell is told that the terminal is gone, passes it on, and outlives the run to tell how it ended; so a
+  // Ctrl-C that comes as a signal, just before the question takes it as a key, is none of its own.
   writeFileSync(
     path('session'),
-    `exec 3<&0\n${command.map((word) => `'${word}'`).join(' ')} <&3 3<&- &\nrun=$!\ntrap 'kill -HUP $run' HUP\n` +
+    `trap '' INT; exec 3<&0\n${command.map((word) => `'${word}'`).join(' ')} <&3 3<&- &\nrun=$!\ntrap 'kill -HUP $run' HUP\n` +
       `wait $run; status=$?; [ $status = 129 ] && { wait $run; status=$?; }\necho $status > '${path('status')}'\n`,
   );
   const terminal: ChildProcess = spawn('socat', ['-', `EXEC:sh ${path('session')},pty,setsid,ctty,stderr`], {
