@@ -5,6 +5,9 @@ import type { Dimension } from '../quantity/quantity.js';
 import { toJsonUnit, ucumCode } from '../quantity/ucum.js';
 import { type ComparedRecords, outcomeOf } from './comparison.js';
 import { endedHow, type Result } from './result.js';
+import type { ComparisonJson } from './schema/comparison-schema.js';
+
+type ComparedJson = ComparisonJson['findings'][number];
 
 /** The name and version of the format; the number changes when a reader would have to. */
 export const comparisonFormat = 'railproof/compare 1';
@@ -13,7 +16,7 @@ export const comparisonFormat = 'railproof/compare 1';
  * A comparison as one JSON object. Numbers are in the unit beside them, named by its UCUM code; a ratio is in
  * %, and so is the share of a difference in the earlier value.
  */
-export function comparisonAsJson(records: ComparedRecords): object {
+export function comparisonAsJson(records: ComparedRecords): ComparisonJson {
   const { before, after, tolerance, comparison } = records;
   return {
     format: comparisonFormat,
@@ -27,7 +30,7 @@ export function comparisonAsJson(records: ComparedRecords): object {
   };
 }
 
-function sideAsJson(result: Result): object {
+function sideAsJson(result: Result): ComparisonJson['before'] {
   const { run, header, integrity } = result;
   const { how, reason } = endedHow(result);
   return {
@@ -41,7 +44,7 @@ function sideAsJson(result: Result): object {
   };
 }
 
-function comparedAsJson(compared: Compared): object {
+function comparedAsJson(compared: Compared): ComparedJson {
   const { finding, before, after, difference, expected, tolerance, verdict, outcome, probability, note } =
     compared;
   return {
@@ -62,18 +65,26 @@ function comparedAsJson(compared: Compared): object {
   };
 }
 
-function findingAsJson({ value, dimension, standardUncertainty, interval, bound, note }: Comparable): object {
+function findingAsJson({
+  value,
+  dimension,
+  standardUncertainty,
+  interval,
+  bound,
+  note,
+}: Comparable): NonNullable<ComparedJson['before']> {
   return {
     value: typeof value === 'number' && dimension !== null ? toJsonUnit(value, dimension) : value,
     unit: dimension === null ? null : ucumCode(dimension),
     standardUncertainty: inUnit(standardUncertainty, dimension),
-    interval: interval === null ? null : interval.map((end) => inUnit(end, dimension)),
+    interval:
+      interval === null ? null : [numberInUnit(interval[0], dimension), numberInUnit(interval[1], dimension)],
     bound: bound ?? null,
     note,
   };
 }
 
-function differenceAsJson(difference: Difference): object {
+function differenceAsJson(difference: Difference): NonNullable<ComparedJson['difference']> {
   const { value, dimension, standardUncertainty, expanded, share } = difference;
   return {
     value: toJsonUnit(value, dimension),
@@ -86,10 +97,14 @@ function differenceAsJson(difference: Difference): object {
 }
 
 /** How far `within` may be stands beside it, as the tolerance. */
-function expectedAsJson(expected: Expected): object {
+function expectedAsJson(expected: Expected): NonNullable<ComparedJson['expected']> {
   return expected.kind === 'becomes' ? { kind: expected.kind, word: expected.word } : { kind: expected.kind };
 }
 
 function inUnit(value: number | null, dimension: Dimension | null): number | null {
-  return value === null || dimension === null ? value : toJsonUnit(value, dimension);
+  return value === null ? null : numberInUnit(value, dimension);
+}
+
+function numberInUnit(value: number, dimension: Dimension | null): number {
+  return dimension === null ? value : toJsonUnit(value, dimension);
 }

@@ -2,6 +2,7 @@ import type { Finding } from '../analysis/finding.js';
 import { toJsonUnit, ucumCode } from '../quantity/ucum.js';
 import { modulesInWords } from './record-heading.js';
 import { endedHow, type Result } from './result.js';
+import type { RunJson } from './schema/run-schema.js';
 import { takenOver } from './taken-over.js';
 
 /** The name and version of the format; the number changes when a reader would have to. */
@@ -11,7 +12,7 @@ export const resultFormat = 'railproof/run 1';
  * The result as one JSON object, for `--json` and for findings.json. Numbers are in the unit beside them,
  * named by its UCUM code (a ratio is in %); a finding that is a word has the unit null.
  */
-export function resultAsJson(result: Result): object {
+export function resultAsJson(result: Result): RunJson {
   const { how, reason } = endedHow(result);
   return {
     format: resultFormat,
@@ -39,19 +40,19 @@ export function resultAsJson(result: Result): object {
 }
 
 /** Only where there are several modules. */
-function circuitAsJson({ header: { circuit, modules } }: Result): object {
+function circuitAsJson({ header: { circuit, modules } }: Result): Pick<RunJson, 'circuit' | 'modules'> {
   return circuit === 'single' ? {} : { circuit, modules: modules.map(({ name }) => name) };
 }
 
 /** Only where there was one. */
-function baselineAsJson({ header: { baseline } }: Result): object {
+function baselineAsJson({ header: { baseline } }: Result): Pick<RunJson, 'baseline'> {
   if (baseline === undefined) return {};
   const { run, modules, tolerance } = baseline;
   return { baseline: { run, modules, tolerance: tolerance.name } };
 }
 
 /** Only where there was one. */
-function takenOverAsJson({ evidence }: Result): object {
+function takenOverAsJson({ evidence }: Result): Pick<RunJson, 'takenOver'> {
   const parts = takenOver(evidence);
   if (parts.length === 0) return {};
   return {
@@ -60,13 +61,13 @@ function takenOverAsJson({ evidence }: Result): object {
 }
 
 /** Only where it had to act. */
-function watchmanAsJson({ watchman }: Result): object {
+function watchmanAsJson({ watchman }: Result): Pick<RunJson, 'watchman'> {
   if (watchman === undefined) return {};
   const { noticed, why, address, attempts, outcome, reason, took } = watchman;
   return { watchman: { noticed, why, address, attempts, outcome, reason, took } };
 }
 
-function findingAsJson(finding: Finding): object {
+function findingAsJson(finding: Finding): RunJson['findings'][number] {
   const { dimension } = finding;
   // JSON knows no infinity, and an interval without an end says nothing: there is none then.
   const interval = finding.interval?.every(Number.isFinite) === true ? finding.interval : null;
@@ -80,7 +81,7 @@ function findingAsJson(finding: Finding): object {
     unit: dimension === null ? null : ucumCode(dimension),
     standardUncertainty: standardUncertainty === null ? null : inUnit(standardUncertainty),
     bound: finding.bound ?? null,
-    interval: interval === null ? null : interval.map(inUnit),
+    interval: interval === null ? null : [inUnit(interval[0]), inUnit(interval[1])],
     coverage: interval === null ? null : 0.95,
     step: finding.step,
     note: finding.note,

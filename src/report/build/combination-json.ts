@@ -1,7 +1,15 @@
 import type { ParallelBuild, ParallelWish } from '../../arrangement/parallel-build.js';
 import type { SeriesBuild } from '../../arrangement/series-build.js';
 import { circuitAsJson, commonAsJson, recommendationAsJson, resistorAsJson } from './json-parts.js';
+import type { BallastWishWritten } from '../schema/ballast-wish-schema.js';
+import type { Common } from '../schema/build-part-schemas.js';
+import type { CombinationJson, ParallelJson, SeriesJson } from '../schema/combination-schema.js';
 import { bandAsJson, estimateAsJson, valueAsJson, valuesAsJson } from './json-values.js';
+
+/** What both ways of joining have alike. */
+type Shared = Pick<ParallelJson, keyof Common | 'load' | 'usable' | 'recommended' | 'circuit'>;
+/** What the one has for itself. */
+type OwnOf<Json> = Omit<Json, keyof Shared | 'format' | 'arrangement'>;
 
 /** The name and version of the format; the number changes when a reader would have to. */
 export const combinationFormat = 'railproof/combination 1';
@@ -16,20 +24,25 @@ export const combinationFormat = 'railproof/combination 1';
  * `standing` says whether it may be built, and why not; `outcome` is that, or `too-little` where the load asked
  * for is more than is recommended. What must not be built has no parts.
  */
-export function combinationAsJson(build: ParallelBuild | SeriesBuild): object {
+export function combinationAsJson(build: ParallelBuild | SeriesBuild): CombinationJson {
+  const format = combinationFormat;
+  const shared = sharedAsJson(build);
+  return build.kind === 'parallel'
+    ? { format, arrangement: build.kind, ...shared, ...parallelAsJson(build) }
+    : { format, arrangement: build.kind, ...shared, ...seriesAsJson(build) };
+}
+
+function sharedAsJson(build: ParallelBuild | SeriesBuild): Shared {
   return {
-    format: combinationFormat,
-    arrangement: build.kind,
     ...commonAsJson(build),
     load: { ...valueAsJson(build.load.current, 'current'), from: build.load.from },
     usable: estimateAsJson(build.usable, 'current'),
     recommended: recommendationAsJson(build.recommended),
     circuit: circuitAsJson(build.circuit),
-    ...(build.kind === 'parallel' ? parallelAsJson(build) : seriesAsJson(build)),
   };
 }
 
-function parallelAsJson(build: ParallelBuild): object {
+function parallelAsJson(build: ParallelBuild): OwnOf<ParallelJson> {
   const { wish, atLoad, sharing, firstToSaturate, withoutBallast, failures, sumOfSingles } = build;
   return {
     wish: {
@@ -79,7 +92,7 @@ function parallelAsJson(build: ParallelBuild): object {
 export function ballastWishAsJson({
   ballast,
   tolerance,
-}: Pick<ParallelWish, 'ballast' | 'tolerance'>): object {
+}: Pick<ParallelWish, 'ballast' | 'tolerance'>): BallastWishWritten {
   return {
     ballast: ballast.kind === 'given' ? valueAsJson(ballast.resistance, 'resistance') : null,
     imbalance: ballast.kind === 'for-imbalance' ? valueAsJson(ballast.most, 'ratio') : null,
@@ -88,7 +101,11 @@ export function ballastWishAsJson({
 }
 
 /** `worst` is that of every tolerance at its worst together, and no limit of 95 %. */
-function worstAsJson({ value, low, high }: ParallelBuild['atLoad']['imbalance']): object {
+function worstAsJson({
+  value,
+  low,
+  high,
+}: ParallelBuild['atLoad']['imbalance']): ParallelJson['sharing']['imbalance'] {
   return {
     ...valueAsJson(value, 'ratio'),
     least: valueAsJson(low, 'ratio'),
@@ -96,7 +113,7 @@ function worstAsJson({ value, low, high }: ParallelBuild['atLoad']['imbalance'])
   };
 }
 
-function ballastAsJson({ ballast }: ParallelBuild): object {
+function ballastAsJson({ ballast }: ParallelBuild): ParallelJson['ballast'] {
   switch (ballast.kind) {
     case 'none':
       return { kind: ballast.kind };
@@ -107,7 +124,7 @@ function ballastAsJson({ ballast }: ParallelBuild): object {
   }
 }
 
-function seriesAsJson(build: SeriesBuild): object {
+function seriesAsJson(build: SeriesBuild): OwnOf<SeriesJson> {
   const { wish, weakest, rails, diodes, bonds, curve } = build;
   return {
     wish: { load: wish.load === undefined ? null : valueAsJson(wish.load, 'current') },

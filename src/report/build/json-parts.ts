@@ -2,11 +2,23 @@ import type { Circuit, Form, Part, Recommendation, ResistorChosen } from '../../
 import type { ModuleProfile, Taken } from '../../arrangement/module-profile.js';
 import type { RecordSource } from '../../arrangement/understood-record.js';
 import type { Dimension } from '../../quantity/quantity.js';
+import type {
+  CircuitWritten,
+  Common,
+  FormJson,
+  ModuleWritten,
+  PartWritten,
+  RecommendationWritten,
+  ResistorWritten,
+  SourceWritten,
+  TakenWritten,
+  WordWritten,
+} from '../schema/build-part-schemas.js';
 import { type AnyBuild, outcomeOf } from './any-build.js';
 import { finite, intervalAsJson, valueAsJson } from './json-values.js';
 
 /** What every build has, however its modules are joined. */
-export function commonAsJson(build: AnyBuild): object {
+export function commonAsJson(build: AnyBuild): Common {
   const { standing, concerns, parts, cautions } = build;
   const outcome = outcomeOf(build);
   return {
@@ -28,11 +40,11 @@ export function commonAsJson(build: AnyBuild): object {
   };
 }
 
-function partAsJson({ marks, what, ratings, why }: Part): object {
+function partAsJson({ marks, what, ratings, why }: Part): PartWritten {
   return { marks, what, ratings, why };
 }
 
-function moduleAsJson(module: ModuleProfile): object {
+function moduleAsJson(module: ModuleProfile): ModuleWritten {
   const { label, outputIsolation, recommended, limitStyle, earth } = module;
   return {
     name: module.name,
@@ -58,11 +70,11 @@ function moduleAsJson(module: ModuleProfile): object {
   };
 }
 
-function orNull(taken: Taken | undefined, dimension: Dimension): object | null {
+function orNull(taken: Taken | undefined, dimension: Dimension): TakenWritten | null {
   return taken === undefined ? null : takenAsJson(taken, dimension);
 }
 
-function takenAsJson(taken: Taken, dimension: Dimension): object {
+function takenAsJson(taken: Taken, dimension: Dimension): TakenWritten {
   return {
     ...valueAsJson(taken.value, dimension),
     bound: taken.bound ?? null,
@@ -79,15 +91,15 @@ function takenAsJson(taken: Taken, dimension: Dimension): object {
   };
 }
 
-function wordAsJson(word: string, from: RecordSource): object {
+function wordAsJson(word: string, from: RecordSource): WordWritten {
   return { value: word, unit: null, from: sourceAsJson(from) };
 }
 
-function sourceAsJson({ run, procedure, began, state, simulated }: RecordSource): object {
+function sourceAsJson({ run, procedure, began, state, simulated }: RecordSource): SourceWritten {
   return { record: run, procedure, began, state, simulated };
 }
 
-export function circuitAsJson({ form, ballast, reverseDiodes, orDiodes }: Circuit): object {
+export function circuitAsJson({ form, ballast, reverseDiodes, orDiodes }: Circuit): CircuitWritten {
   return {
     form: formAsJson(form),
     ballast:
@@ -103,17 +115,17 @@ export function circuitAsJson({ form, ballast, reverseDiodes, orDiodes }: Circui
 }
 
 /** `{ kind: "module", name }`, or `{ kind: "group" | "stack", of: [ … ] }`. */
-function formAsJson(form: Form): object {
+function formAsJson(form: Form): FormJson {
   return form.kind === 'module'
     ? { kind: form.kind, name: form.name }
     : { kind: form.kind, of: form.of.map(formAsJson) };
 }
 
-export function recommendationAsJson({ current, setBy }: Recommendation): object {
+export function recommendationAsJson({ current, setBy }: Recommendation): RecommendationWritten {
   return { ...valueAsJson(current, 'current'), setBy };
 }
 
-export function resistorAsJson(resistor: ResistorChosen): object {
+export function resistorAsJson(resistor: ResistorChosen): ResistorWritten {
   const { resistance, tolerance, dissipation, dissipationAtLimit, rating, voltageCost } = resistor;
   return {
     resistance: valueAsJson(resistance, 'resistance'),

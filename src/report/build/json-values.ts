@@ -1,6 +1,7 @@
 import type { Band, Estimate } from '../../arrangement/build.js';
 import type { Dimension } from '../../quantity/quantity.js';
 import { toJsonUnit, ucumCode } from '../../quantity/ucum.js';
+import type { BandWritten, EstimateWritten, Value, Values } from '../schema/number-schemas.js';
 
 /*
  * How numbers stand in the JSON of what may be built: always with their unit beside them, by its UCUM code, a
@@ -8,12 +9,12 @@ import { toJsonUnit, ucumCode } from '../../quantity/ucum.js';
  */
 
 /** `{ value, unit }`. */
-export function valueAsJson(value: number, dimension: Dimension): object {
+export function valueAsJson(value: number, dimension: Dimension): Value {
   return { value: finite(value, dimension), unit: ucumCode(dimension) };
 }
 
 /** `{ value, unit, bound, interval, coverage }`; the interval is null where it has no end. */
-export function estimateAsJson({ value, low, high, bound }: Estimate, dimension: Dimension): object {
+export function estimateAsJson({ value, low, high, bound }: Estimate, dimension: Dimension): EstimateWritten {
   return {
     ...valueAsJson(value, dimension),
     bound: bound ?? null,
@@ -22,21 +23,24 @@ export function estimateAsJson({ value, low, high, bound }: Estimate, dimension:
 }
 
 /** `{ interval, coverage }`, for a value beside it. */
-export function intervalAsJson(ends: readonly number[], dimension: Dimension): object {
-  const has = ends.every(Number.isFinite);
+export function intervalAsJson(
+  [low, high]: readonly [low: number, high: number],
+  dimension: Dimension,
+): Pick<EstimateWritten, 'interval' | 'coverage'> {
+  const has = Number.isFinite(low) && Number.isFinite(high);
   return {
-    interval: has ? ends.map((end) => toJsonUnit(end, dimension)) : null,
+    interval: has ? [toJsonUnit(low, dimension), toJsonUnit(high, dimension)] : null,
     coverage: has ? 0.95 : null,
   };
 }
 
 /** `{ values, unit }`: one axis of a curve. */
-export function valuesAsJson(values: readonly number[], dimension: Dimension): object {
+export function valuesAsJson(values: readonly number[], dimension: Dimension): Values {
   return { values: values.map((value) => finite(value, dimension)), unit: ucumCode(dimension) };
 }
 
 /** `{ best, low, high, unit, coverage }`: a list each, in the order of the curve's axis. */
-export function bandAsJson({ best, low, high }: Band, dimension: Dimension): object {
+export function bandAsJson({ best, low, high }: Band, dimension: Dimension): BandWritten {
   const each = (values: readonly number[]): (number | null)[] =>
     values.map((value) => finite(value, dimension));
   return { best: each(best), low: each(low), high: each(high), unit: ucumCode(dimension), coverage: 0.95 };

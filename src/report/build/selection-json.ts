@@ -2,6 +2,7 @@ import type { Assignment, Selection } from '../../arrangement/selection.js';
 import { ballastWishAsJson } from './combination-json.js';
 import { circuitAsJson, commonAsJson } from './json-parts.js';
 import { valueAsJson } from './json-values.js';
+import type { SelectionJson } from '../schema/selection-schema.js';
 
 /** The name and version of the format; the number changes when a reader would have to. */
 export const selectionFormat = 'railproof/selection 1';
@@ -11,7 +12,7 @@ export const selectionFormat = 'railproof/selection 1';
  * as in {@link combinationAsJson}. `best` is null where the drawer does not hold enough, `next` where there is
  * no other way; both are lists of supplies, each a list of groups, the lowest of a stack first.
  */
-export function selectionAsJson(selection: Selection): object {
+export function selectionAsJson(selection: Selection): SelectionJson {
   const { wish, best, next, margin, leftOut, considered, unused, circuit } = selection;
   return {
     format: selectionFormat,
@@ -40,7 +41,12 @@ export function selectionAsJson(selection: Selection): object {
   };
 }
 
-function assignmentAsJson({ supplies, recommended, imbalance, ballast }: Assignment): object {
+function assignmentAsJson({
+  supplies,
+  recommended,
+  imbalance,
+  ballast,
+}: Assignment): NonNullable<SelectionJson['best']> {
   return {
     recommended: valueAsJson(recommended, 'current'),
     imbalance: valueAsJson(imbalance, 'ratio'),

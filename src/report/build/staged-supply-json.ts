@@ -5,10 +5,13 @@ import type {
   MovementVerdict,
   StagedBuild,
 } from '../../arrangement/staged-build.js';
-import { sequences, type StagesWish } from '../../arrangement/stages-wish.js';
+import { type Sequence, sequences, type StagesWish } from '../../arrangement/stages-wish.js';
 import { ucumCode } from '../../quantity/ucum.js';
 import { circuitAsJson, commonAsJson } from './json-parts.js';
+import type { StagedSupplyJson } from '../schema/staged-supply-schema.js';
 import { estimateAsJson, finite, valueAsJson, valuesAsJson } from './json-values.js';
+
+type MovementJson = StagedSupplyJson['switchOvers'][number]['goingUp'];
 
 /** The name and version of the format; the number changes when a reader would have to. */
 export const stagedSupplyFormat = 'railproof/staged-supply 1';
@@ -19,7 +22,7 @@ export const stagedSupplyFormat = 'railproof/staged-supply 1';
  * coming from below and from above. `dissipation.watts` is by output, then by current; null beyond what is
  * guaranteed. Each movement of contacts has a verdict for every way of driving them; that of `sequence` decides.
  */
-export function stagedSupplyAsJson(build: StagedBuild): object {
+export function stagedSupplyAsJson(build: StagedBuild): StagedSupplyJson {
   const { wish, arrangements, switchOvers, guaranteed, map, mostDissipation } = build;
   return {
     format: stagedSupplyFormat,
@@ -61,7 +64,7 @@ export function stagedSupplyAsJson(build: StagedBuild): object {
 function linearStageAsJson(
   { dropOut, current, dissipation }: StagesWish['linearStage'],
   most: number,
-): object {
+): StagedSupplyJson['linearStage'] {
   return {
     dropOut: valueAsJson(dropOut, 'voltage'),
     current: valueAsJson(current, 'current'),
@@ -79,7 +82,7 @@ function linearStageAsJson(
   };
 }
 
-function arrangementAsJson(arrangement: FoundArrangement): object {
+function arrangementAsJson(arrangement: FoundArrangement): StagedSupplyJson['arrangements'][number] {
   const { name, circuit, closed, openVoltage, fullVoltage, current, setBy } = arrangement;
   return {
     name,
@@ -91,20 +94,21 @@ function arrangementAsJson(arrangement: FoundArrangement): object {
   };
 }
 
-function movementAsJson({ moving, bySequence }: Movement): object {
+function movementAsJson({ moving, bySequence }: Movement): MovementJson {
   return {
     moving,
-    verdicts: sequences.map((sequence) => ({ sequence, ...verdictAsJson(bySequence[sequence]) })),
+    verdicts: sequences.map((sequence) => verdictAsJson(sequence, bySequence[sequence])),
   };
 }
 
-function verdictAsJson(verdict: MovementVerdict): object {
+function verdictAsJson(sequence: Sequence, verdict: MovementVerdict): MovementJson['verdicts'][number] {
   if (verdict.kind === 'clear') {
     const { kind, states, interrupts } = verdict;
-    return { kind, states, interrupts };
+    return { sequence, kind, states, interrupts };
   }
   const { kind, order, connection } = verdict;
   return {
+    sequence,
     kind,
     order,
     connection: {
@@ -117,6 +121,10 @@ function verdictAsJson(verdict: MovementVerdict): object {
   };
 }
 
-function guaranteedAsJson({ arrangement, current, setBy }: Guaranteed): object {
+function guaranteedAsJson({
+  arrangement,
+  current,
+  setBy,
+}: Guaranteed): StagedSupplyJson['guaranteed'][number]['rising'] {
   return { arrangement, current: valueAsJson(current, 'current'), setBy };
 }
