@@ -5,6 +5,7 @@ import type { FileRead } from '../files/read-text.js';
 import { jsonText } from '../report/json-text.js';
 import { atDriverLine } from './driver-line.js';
 import { junitOfRun } from './junit-of-run.js';
+import { placeForJunit } from './junit-written.js';
 import type { RunView } from './live-view/run-view.js';
 import { loadPlan, type LoadedPlan } from './load-plan.js';
 import { planAsJson, planAsText } from './plan-shown.js';
@@ -22,6 +23,7 @@ import { worldOf } from './wiring.js';
 /** `railproof run`: performs a procedure, or goes on with one that was broken off, and prints what it shows. */
 export async function run(options: RunOptions, streams: Streams): Promise<ExitCode> {
   const wanted = runWanted(options);
+  const keepJunit = await placeForJunit(options.junit);
   const loaded = wanted.kind === 'afresh' ? await loadPlan(wanted) : await loadResumed(wanted);
   const { plan, resumed } = loaded;
   const done = resumed?.from.steps ?? 0;
@@ -48,7 +50,7 @@ export async function run(options: RunOptions, streams: Streams): Promise<ExitCo
     const operator = await operatorFor(plan.bench, world, yes, streams, { stop, view });
     requireOperator(loaded, operator, yes);
     const play = options.trace === true ? playTraced : playPlain;
-    const junit = await junitOfRun(options.junit, plan, () => world.clock.wall());
+    const junit = await junitOfRun(keepJunit, plan, () => world.clock.wall());
     const performed = await play(loaded, { world, operator, runs, stop, streams, view }).catch(
       async (error: unknown) => {
         await junit.notBegun(error);

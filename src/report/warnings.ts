@@ -1,4 +1,3 @@
-import type { WatchmanReport } from '../record/watchman-report.js';
 import { endedHow, type Result } from './result.js';
 import { watchmanText } from './watchman-text.js';
 
@@ -20,7 +19,7 @@ function notWhole(result: Result): readonly Warning[] {
     const text = `line ${line} of the journal: ${problem}. What follows rests on the first ${lines} lines.`;
     return [{ word: 'DAMAGED RECORD', text }];
   }
-  return endedHow(result).how === 'cut-off'
+  return isCutOff(result)
     ? [{ word: 'CUT OFF', text: 'the record ends without an end; what follows is what is whole.' }]
     : [];
 }
@@ -28,19 +27,29 @@ function notWhole(result: Result): readonly Warning[] {
 const switchOff = '`railproof safe --bench <file>` switches it off.';
 
 function stillOn(result: Result): readonly Warning[] {
-  const { evidence, watchman } = result;
-  const isCutOff = endedHow(result).how === 'cut-off';
-  if (isCutOff && watchman !== undefined) return watched(watchman);
-  if (evidence.input !== 'on') return [];
-  return isCutOff
-    ? [{ word: 'THE LOAD WAS ON', text: `when the record broke off: ${switchOff}` }]
-    : [{ word: 'THE LOAD MAY BE ON', text: `nobody could read back that it went off. ${switchOff}` }];
+  const { watchman } = result;
+  const on = loadOn(result);
+  return [
+    ...(isCutOff(result) && watchman !== undefined
+      ? [{ word: 'WATCHMAN', text: `${watchmanText(watchman)}.` }]
+      : []),
+    ...(on === undefined ? [] : [on]),
+  ];
 }
 
-/** What became of the program, and of the load. */
-function watched(report: WatchmanReport): readonly Warning[] {
-  const told = { word: 'WATCHMAN', text: `${watchmanText(report)}.` };
-  return report.outcome === 'off' ? [told] : [told, { word: 'THE LOAD MAY BE ON', text: switchOff }];
+/** That the load may be on, where neither the run nor the watchman saw it go off. */
+export function loadOn(result: Result): Warning | undefined {
+  const { evidence, watchman } = result;
+  const left = { word: 'THE LOAD MAY BE ON', text: switchOff };
+  if (isCutOff(result) && watchman !== undefined) return watchman.outcome === 'off' ? undefined : left;
+  if (evidence.input !== 'on') return undefined;
+  return isCutOff(result)
+    ? { word: 'THE LOAD WAS ON', text: `when the record broke off: ${switchOff}` }
+    : { word: 'THE LOAD MAY BE ON', text: `nobody could read back that it went off. ${switchOff}` };
+}
+
+function isCutOff(result: Result): boolean {
+  return endedHow(result).how === 'cut-off';
 }
 
 function otherModules({ header: { baseline, modules } }: Result): readonly Warning[] {

@@ -6,14 +6,15 @@ import { modulesInWords } from '../record-heading.js';
 import { journalInWords, probabilityInWords } from '../record-words.js';
 import { endedHow, type Result } from '../result.js';
 import { takenOver } from '../taken-over.js';
+import { loadOn, warningInWords } from '../warnings.js';
 import { watchmanText } from '../watchman-text.js';
 import type { Came, Case, Suite } from './suite.js';
 
 /**
  * A record as a suite: a case for each decision. One that does not conform is a failure of the type
  * `does-not-conform`, one that is undecided a failure of the type `undecided`: what nobody can tell has not
- * passed. A run that did not come to its end, and a journal that can't be believed to its end, is an error. A
- * record of which nothing is required has one case, which is skipped.
+ * passed. A run that did not come to its end, a load that nobody saw go off, and a journal that can't be believed
+ * to its end, is an error each. A record of which nothing is required has one case, which is skipped.
  */
 export function runSuite(result: Result): Suite {
   const { run, header, evidence, decisions } = result;
@@ -69,36 +70,36 @@ export function propertiesOf(result: Result): Suite['properties'] {
   ];
 }
 
-/** Why the record can't be taken for all that was to be shown. */
-export function troubles(result: Result): readonly Pick<Case, 'name' | 'came'>[] {
+type Trouble = Pick<Case, 'name' | 'came'>;
+
+/** Why the record can't be taken for all that was to be shown, and what must be seen to. */
+export function troubles(result: Result): readonly Trouble[] {
   const { integrity } = result;
-  const ending = endingOf(result);
+  const on = loadOn(result);
   return [
-    ...(ending === undefined ? [] : [{ name: 'the run', came: { kind: 'error' as const, ...ending } }]),
-    ...(integrity.kind === 'damaged'
-      ? [
-          {
-            name: 'the journal',
-            came: { kind: 'error' as const, type: 'damaged', message: damage(integrity) },
-          },
-        ]
-      : []),
+    ...endingOf(result),
+    ...(on === undefined ? [] : [trouble('the load', 'not-confirmed-off', warningInWords(on))]),
+    ...(integrity.kind === 'damaged' ? [trouble('the journal', 'damaged', damage(integrity))] : []),
   ];
 }
 
-function endingOf(result: Result): { readonly type: string; readonly message: string } | undefined {
+function trouble(name: string, type: string, message: string): Trouble {
+  return { name, came: { kind: 'error', type, message } };
+}
+
+function endingOf(result: Result): readonly Trouble[] {
   const { how, reason } = endedHow(result);
+  const why = reason ?? 'no reason is given';
   switch (how) {
     case 'completed':
-      return undefined;
+      return [];
     case 'stopped':
-      return { type: how, message: `the run was stopped: ${reason ?? 'no reason is given'}` };
     case 'failed':
-      return { type: how, message: `the run failed: ${reason ?? 'no reason is given'}` };
+      return [trouble('the run', how, `the run ${how === 'stopped' ? 'was stopped' : 'failed'}: ${why}`)];
     case 'cut-off': {
       const { watchman } = result;
       const dead = watchman === undefined ? '' : `: ${watchmanText(watchman)}`;
-      return { type: how, message: `the record is cut off, and the run has no end${dead}` };
+      return [trouble('the run', how, `the record is cut off, and the run has no end${dead}`)];
     }
   }
 }
