@@ -45,6 +45,8 @@ export interface StepEvidence {
   readonly ended: Seconds | undefined;
   /** Also of points that were taken again. */
   readonly readings: number;
+  /** Where in the journal it stands, by lines that count from 1. */
+  readonly lines: { readonly first: number; readonly last: number };
   readonly settings: Readonly<Record<string, unknown>>;
   readonly points: readonly PointEvidence[];
   readonly recoveries: readonly Recovery[];
@@ -52,7 +54,11 @@ export interface StepEvidence {
 }
 
 type Growing<T> = {
-  -readonly [Key in keyof T]: T[Key] extends readonly (infer Item)[] ? Item[] : T[Key];
+  -readonly [Key in keyof T]: T[Key] extends readonly (infer Item)[]
+    ? Item[]
+    : T[Key] extends { readonly first: number; readonly last: number }
+      ? { first: number; last: number }
+      : T[Key];
 };
 
 /** There are half a dozen names; this is room for those of other versions. */
@@ -66,6 +72,7 @@ export class EvidenceCollector {
   #ended: Ended | undefined;
   #tripped: GuardTripped | undefined;
   #readings = 0;
+  #lines = 0;
   #lasted = 0;
   #input: 'on' | 'off' | undefined;
   readonly #resumed: Resumed[] = [];
@@ -80,6 +87,8 @@ export class EvidenceCollector {
   add(event: TimedEvent): void {
     const step = this.#steps.at(-1);
     this.#lasted = event.t;
+    this.#lines += 1;
+    if (step?.ended === undefined && event.event !== 'ended' && step) step.lines.last = this.#lines;
     switch (event.event) {
       case 'reading':
         this.#readings += 1;
@@ -94,6 +103,7 @@ export class EvidenceCollector {
           began: event.t,
           ended: undefined,
           readings: 0,
+          lines: { first: this.#lines, last: this.#lines },
           settings,
           points: [],
           recoveries: [],

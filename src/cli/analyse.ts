@@ -2,7 +2,7 @@ import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-er
 import { runSuite } from '../report/junit/run-suite.js';
 import type { Result } from '../report/result.js';
 import { understand } from '../report/understand.js';
-import { statusOfOutcome } from './exit-status.js';
+import { statusOfRecord } from './exit-status.js';
 import { placeForJunit } from './junit-written.js';
 import { resumeHint } from './resume-hint.js';
 import { shown } from './shown.js';
@@ -41,10 +41,5 @@ export async function analyseRecord(
   if (wanted.strict === true && result.integrity.kind !== 'whole') throw new NotWholeError(result);
   streams.stdout.write(shown(result, wanted.json === true, streams));
   streams.stderr.write(resumeHint(wanted.run, result));
-  const status = result.evidence.ended?.status ?? exitCodes.conforms;
-  return isExitCode(status) && status !== exitCodes.conforms ? status : statusOfOutcome(result.outcome);
-}
-
-function isExitCode(status: number): status is ExitCode {
-  return (Object.values(exitCodes) as number[]).includes(status);
+  return statusOfRecord(result);
 }

@@ -7,7 +7,7 @@ import { buildAsText } from '../report/build/build-text.js';
 import { jsonText } from '../report/json-text.js';
 import { styleFor } from '../report/style.js';
 import { statusOfBuild } from './exit-status.js';
-import { packageFacts } from './package-facts.js';
+import { madeAt } from './made-at.js';
 import { show } from './say.js';
 import type { Streams } from './streams.js';
 
@@ -35,12 +35,7 @@ export async function showBuild(build: AnyBuild, wanted: ShownAs, streams: Strea
       import('../report/page/build-page.js'),
       import('./page-written.js'),
     ]);
-    const { name, version } = packageFacts();
-    await writePage(
-      wanted.sheet,
-      buildPage(build, { program: `${name} ${version}`, date: realClock.wall() }),
-      'build sheet',
-    );
+    await writePage(wanted.sheet, buildPage(build, madeAt(realClock.wall())), 'build sheet');
     streams.stderr.write(`Build sheet: ${printable(wanted.sheet)}\n`);
   }
   return statusOfBuild(outcomeOf(build));

@@ -15,6 +15,7 @@ import { type Performed, perform, type RunWatcher } from '../run/perform.js';
 import type { Operator } from '../steps/operator.js';
 import { headerOf } from './header-of.js';
 import type { LoadedPlan } from './load-plan.js';
+import { madeAt } from './made-at.js';
 import type { Resumption } from './resume-plan.js';
 import { instrumentsInWords, versionsInWords } from './resume-shown.js';
 import type { Watchman } from './watchman.js';
@@ -27,7 +28,7 @@ export interface PlanPerformed extends Performed {
     | {
         readonly kind: 'result';
         readonly result: Result;
-        /** Why readings.csv and findings.json are not both there, where they are not. */
+        /** Why readings.csv, findings.json and report.html are not all there, where they are not. */
         readonly unkept: RecordWriteError | undefined;
       }
     | { readonly kind: 'error'; readonly error: unknown };
@@ -118,7 +119,7 @@ async function performWatched(
       });
       // What follows may keep us busy for so long that we would count as hung.
       await watchman?.dismiss();
-      return { ...performed, folder, understood: finish(folder) };
+      return { ...performed, folder, understood: await finish(folder, world.clock.wall()) };
     } finally {
       journal.close();
     }
@@ -159,23 +160,35 @@ function goOnWith({ run }: Resumption, journal: JournalWriter): void {
 }
 
 /** What can be made again from the journal must not turn a good run into a failed one. */
-function finish(folder: RunFolder): PlanPerformed['understood'] {
+async function finish(folder: RunFolder, now: Date): Promise<PlanPerformed['understood']> {
   try {
     const result = understand(folder.path);
-    return { kind: 'result', result, unkept: keepResult(folder, result) };
+    return { kind: 'result', result, unkept: await keepResult(folder, result, now) };
   } catch (error) {
     return { kind: 'error', error };
   }
 }
 
 /** The journal is whole without them, so that they can't be written is told and fails nothing. */
-function keepResult(folder: RunFolder, result: Result): RecordWriteError | undefined {
+async function keepResult(
+  folder: RunFolder,
+  result: Result,
+  now: Date,
+): Promise<RecordWriteError | undefined> {
   try {
     writeReadingsCsv(folder);
     replaceFile(folder.findings, jsonText(resultAsJson(result)));
-    return undefined;
   } catch (error) {
     if (error instanceof RecordWriteError) return error;
     throw error;
+  }
+  try {
+    // Charts are loaded by whoever has something to draw.
+    const { runPage } = await import('../report/run-page/run-page.js');
+    replaceFile(folder.report, runPage(result, madeAt(now)));
+    return undefined;
+  } catch (error) {
+    // Whatever is wrong with the page, what was measured is told.
+    return error instanceof RecordWriteError ? error : new RecordWriteError(folder.report, error);
   }
 }

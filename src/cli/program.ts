@@ -7,6 +7,7 @@ import type { CompareOptions } from './compare.js';
 import type { DriversOptions } from './drivers.js';
 import { errorText } from './error-text.js';
 import { packageFacts } from './package-facts.js';
+import type { ReportOptions } from './report.js';
 import type { RunOptions } from './run-wanted.js';
 import { say } from './say.js';
 import type { SelectOptions } from './select.js';
@@ -111,6 +112,18 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     .action(async (run: string, options: { strict?: boolean; json?: boolean; junit?: string }) => {
       const { analyseRecord } = await import('./analyse.js');
       done(await analyseRecord({ run, ...options }, streams));
+    });
+
+  command(
+    'report <run>',
+    'the report of a record, a page with charts and uncertainty budgets, to be read, printed and signed',
+    'railproof report fixtures/runs/20261130T091500Z-K1-real-limit --to report.html',
+  )
+    .option('--to <file>', 'where the page goes; report.html in the folder of the record when left out')
+    .option('--open', 'show it with what this system opens pages with')
+    .action(async (run: string, options: ReportOptions) => {
+      const { report } = await import('./report.js');
+      done(await report(run, options, streams));
     });
 
   command(

@@ -24,6 +24,8 @@ export interface RunFolder {
   readonly journal: string;
   readonly readings: string;
   readonly findings: string;
+  /** What people look at, worked out of the rest. */
+  readonly report: string;
   /** There only where the watchman had to act. */
   readonly watchman: string;
   /** The folder of what went over the lines; there only where that was asked for. */
@@ -37,6 +39,7 @@ export function runFolderAt(path: string): RunFolder {
     journal: join(path, 'journal.jsonl'),
     readings: join(path, 'readings.csv'),
     findings: join(path, 'findings.json'),
+    report: join(path, 'report.html'),
     watchman: join(path, 'watchman.json'),
     trace: join(path, 'trace'),
   };

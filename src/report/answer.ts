@@ -7,7 +7,7 @@ import { inOneLine } from './finding-text.js';
 import { groupAnswer } from './group-answer.js';
 import { earthAnswer, moduleAnswer } from './module-answer.js';
 import { printable } from './printable.js';
-import { endedHow, type Result } from './result.js';
+import { endedHow, isWhole, type Result } from './result.js';
 
 /**
  * What the technician came for, in a few sentences: what does not conform, what to do, and why. Empty when
@@ -34,19 +34,24 @@ function advice(result: Result): readonly string[] {
   if (recommended === undefined || usable === undefined) return [];
   const current = Number(recommended.value);
   const it = { single: 'it', parallel: 'the group', series: 'the string' }[result.header.circuit];
-  const isWhole = endedHow(result).how === 'completed';
   const what =
     current > 0
-      ? `${loaded(it, isWhole, result.outcome)} with up to ${roundedDown(current, 'current')}`
+      ? `${loaded(it, isWhole(result), result.outcome)} with up to ${roundedDown(current, 'current')}`
       : `do not load ${it}`;
-  const sentence = isWhole ? what : `as far as the run went, ${what}`;
-  return [`${capitalised(sentence)}.`, why(usable)];
+  return [`${capitalised(asFarAs(result) + what)}.`, why(usable)];
+}
+
+function asFarAs(result: Result): string {
+  if (isWhole(result)) return '';
+  return endedHow(result).how === 'completed'
+    ? 'as far as the record can be believed, '
+    : 'as far as the run went, ';
 }
 
 /** Who reads one line only must not take what is not accepted, or not tried to its end, for something to be used. */
-function loaded(it: string, isWhole: boolean, outcome: Result['outcome']): string {
+function loaded(it: string, whole: boolean, outcome: Result['outcome']): string {
   if (outcome === 'does-not-conform') return `by its limits alone ${it} could be loaded continuously`;
-  return isWhole ? `load ${it} continuously` : `${it} could be loaded continuously`;
+  return whole ? `load ${it} continuously` : `${it} could be loaded continuously`;
 }
 
 const endedAs = { stopped: 'was stopped', failed: 'failed', 'cut-off': 'was cut off' } as const;

@@ -34,3 +34,8 @@ export function endedHow({ evidence }: Result): { readonly how: EndedHow; readon
   const { ended } = evidence;
   return ended === undefined ? { how: 'cut-off', reason: null } : { how: ended.how, reason: ended.reason };
 }
+
+/** Whether the run came to its end, and all of its record can be believed. */
+export function isWhole(result: Result): boolean {
+  return result.integrity.kind === 'whole' && endedHow(result).how === 'completed';
+}

@@ -96,6 +96,24 @@ section{margin-top:2.6rem}
 .good{--c:var(--good)}.bad{--c:var(--bad)}.unsure{--c:var(--unsure)}
 .bad.standing{border-width:3px;border-left-width:.5rem}
 .unsure.standing{border-style:dashed;border-left-style:solid}
+.plain{--c:var(--ink)}
+.facts{display:grid;grid-template-columns:max-content 1fr;gap:.3rem 1.2rem;margin:1.1rem 0 0}
+.facts dt{color:var(--soft);font-size:.9rem;line-height:1.7}
+.facts dd{margin:0;min-width:0}
+.figures{display:grid;grid-template-columns:repeat(auto-fit,minmax(9.5rem,1fr));gap:.9rem 1.6rem;margin:1.1rem 0 .3rem}
+.figures div{border-top:1.5px solid var(--ink);padding-top:.35rem}
+.figures dt{color:var(--soft);font-size:.88rem;line-height:1.35}
+.figures dd{margin:0;font-size:.88rem;line-height:1.35}
+.figures .big{font:600 1.45rem/1.3 Charter,"Bitstream Charter","Sitka Text",Cambria,"Noto Serif","Liberation Serif",serif;
+ font-variant-numeric:tabular-nums}
+.code{font:.86em/1.5 ui-monospace,"Noto Sans Mono","Liberation Mono",monospace;overflow-wrap:anywhere}
+.one{break-inside:avoid;margin-top:1.7rem}
+.one h3{display:flex;flex-wrap:wrap;gap:.1rem 1rem;justify-content:space-between;margin:0;padding-bottom:.25rem;
+ border-bottom:1px solid var(--rule)}
+.sign{display:grid;grid-template-columns:repeat(auto-fit,minmax(15rem,1fr));gap:1.2rem 2rem;break-inside:avoid}
+.sign dl{margin:0}
+.sign dt{color:var(--soft);font-size:.85rem}
+.sign dd{margin:0 0 .6rem;height:2.3rem;border-bottom:1px solid var(--ink)}
 .wide{overflow-x:auto;margin:.9rem 0;overflow-wrap:normal}
 table{border-collapse:collapse;width:100%;font-size:.94rem;line-height:1.4;font-variant-numeric:tabular-nums}
 caption{text-align:left;padding-bottom:.35rem;font-size:.9rem}
@@ -130,6 +148,8 @@ svg .strong{font-weight:600}
 .chart .shape{fill:var(--paper);fill-opacity:.7;stroke:var(--c);stroke-width:1.5}
 .chart .whisker{fill:none;stroke:var(--c);stroke-width:2}
 .chart .joining{fill:none;stroke:var(--c);stroke-width:.8}
+.chart .shift .shaft{fill:none;stroke:var(--ink);stroke-width:2.2}
+.chart .shift .head{fill:var(--ink)}
 .chart .heat{fill:var(--heat);fill-opacity:.13}
 .chart .rim{fill:none;stroke:var(--ink);stroke-width:2.4}
 .chart .contour{fill:none;stroke:var(--ink);stroke-width:1}
@@ -143,6 +163,8 @@ ${series.join('\n')}
 .diagram .value{fill:var(--soft)}
 @media (max-width:30rem){
 h1{font-size:1.6rem}
+.facts{grid-template-columns:1fr;gap:0}
+.facts dd{margin-bottom:.45rem}
 .standing{grid-template-columns:2.2rem 1fr;gap:0 .8rem;padding:1rem}
 .standing svg{width:2.2rem;height:2.2rem}
 .notes thead{position:absolute;left:-99rem}

@@ -17,7 +17,9 @@ export interface Sheet {
   /** Above the title: what sort of page it is, a few words. */
   readonly kind: string;
   readonly title: string;
-  /** Below the title and before all sections: what the reader came for. */
+  /** Below the title: what the page is about, where the title alone does not say it. */
+  readonly about?: Content;
+  /** Below that and before all sections: what the reader came for. */
   readonly answer: Content;
   readonly sections: readonly (Markup | undefined)[];
 }
@@ -36,10 +38,10 @@ export function pageMark(kind: PageKind): string {
 }
 
 /** One file that needs no other: it opens from a stick, reads on a narrow screen, and prints on A4. */
-export function pageText({ kind, title, answer, sections, made, pageKind }: Page): string {
+export function pageText({ kind, title, about, answer, sections, made, pageKind }: Page): string {
   const body = together(
     element('a', { class: 'skip', href: '#answer' }, 'To the answer'),
-    element('header', {}, element('p', { class: 'kind' }, kind), element('h1', {}, title)),
+    element('header', {}, element('p', { class: 'kind' }, kind), element('h1', {}, title), about),
     element('main', {}, element('div', { id: 'answer' }, answer), sections),
     element(
       'footer',

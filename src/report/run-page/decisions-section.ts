@@ -1,0 +1,51 @@
+import { findingNamed } from '../../analysis/finding.js';
+import type { Outcome } from '../../judgement/judge.js';
+import { inOneLine } from '../finding-text.js';
+import { element, type Markup } from '../page/markup.js';
+import { section } from '../page/page.js';
+import { table } from '../page/table.js';
+import { probabilityInWords } from '../record-words.js';
+import type { Result } from '../result.js';
+
+const verdicts: Readonly<Record<Outcome, { readonly words: string; readonly look: string }>> = {
+  conforms: { words: 'conforms', look: 'good' },
+  'does-not-conform': { words: 'does not conform', look: 'bad' },
+  undecided: { words: 'undecided', look: 'unsure' },
+};
+
+/** In a word that stands out. */
+export function verdict(outcome: Outcome): Markup {
+  const { words, look } = verdicts[outcome];
+  return element('span', { class: `state ${look}` }, words);
+}
+
+/** What was required, what was found, and what comes of it. */
+export function decisionsSection({ decisions, findings }: Result): Markup | undefined {
+  if (decisions.length === 0) return undefined;
+  return section(
+    'Decisions',
+    table(
+      'Guarded by the expanded uncertainty: what lies closer to its limit than that is undecided (JCGM 106, ILAC-G8).',
+      [
+        { heading: 'Required of', as: 'name' },
+        { heading: 'Requirement', as: 'text' },
+        { heading: 'Found', as: 'fixed' },
+        { heading: 'Decision', as: 'fixed' },
+        { heading: 'Why', as: 'long' },
+      ],
+      decisions.map(({ finding, requirement, outcome, probability, note }) => {
+        const found = findingNamed(findings, finding);
+        const least = found?.bound === 'least' ? '≥ ' : '';
+        return [
+          finding,
+          requirement,
+          found === undefined ? 'nothing' : least + inOneLine(found),
+          verdict(outcome),
+          [probability === null ? '' : `probability of conformity ${probabilityInWords(probability)}`, note]
+            .filter((part) => part !== '')
+            .join('; '),
+        ];
+      }),
+    ),
+  );
+}
