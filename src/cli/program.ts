@@ -92,6 +92,10 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
       'how far it may be from the baseline: a shipped tolerance by its name, or a file',
     )
     .option('--yes', 'acknowledge wiring and cautions beforehand (for unattended benches)')
+    .option(
+      '--view',
+      'serve a page on this machine that shows the run, and on which it is answered and stopped; its address opens once',
+    )
     .option('--trace', 'keep every byte and when it came with the record, so that the run can be played back')
     .option('--dry-run', 'show what would be done, and touch nothing')
     .addOption(junit())
