@@ -89,11 +89,22 @@ function askAddress(
     read: (answer) => {
       const port = /^\d{1,3}$/.test(answer) ? ports[Number(answer) - 1]?.address : answer;
       if (port === undefined) throw new UnfitAnswerError(`there is no port with the number ${answer}`);
+      refuseBare(port);
       const address = parseAddress(port);
       if (address.kind === 'tcp' || address.kind === 'serial') return address;
       throw new UnfitAnswerError(`"${answer}" is no place of a real instrument; tcp:// or serial: is needed`);
     },
   });
+}
+
+/** An address as its menu, or the system, writes it, which lacks only how to connect to it. @throws UnfitAnswerError */
+function refuseBare(answer: string): void {
+  if (/^(?:\/dev\/|COM\d)/i.test(answer))
+    throw new UnfitAnswerError(`at a serial port it is written serial:${answer}?baud=9600`);
+  if (/^(?:[a-z\d-]+\.)+[a-z\d-]+(?::\d+)?$|^[a-z\d-]+:\d+$/i.test(answer))
+    throw new UnfitAnswerError(
+      `on the network it is written tcp://${answer}${answer.includes(':') ? '' : ':5025'}`,
+    );
 }
 
 interface Around {

@@ -97,7 +97,7 @@ async function askLeads(
     read: readBy(quantity('resistance', '', { least: 0 })),
   });
   if (resistance === undefined) return undefined;
-  const share = resistance / 5;
+  const share = Number((resistance / 5).toPrecision(2));
   const uncertainty = await questions.ask({
     ask: 'How far off may that be?',
     why: 'To either side, clamps and plugs included. It goes into the uncertainty of what rests on it.',

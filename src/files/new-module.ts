@@ -35,7 +35,7 @@ export function moduleText(module: Module): string {
     `output-isolation: ${outputIsolation === 'unknown' ? 'unknown' : formatQuantity(outputIsolation, 'voltage')}\n`,
     comment('What was done to it, oldest first; what has to do with earth brings its caution with it.'),
     ...(changes.length === 0
-      ? [comment('- { date: 2026-11-14, what: link from output to earth removed }', '  '), 'changes: []\n']
+      ? [comment('changes: [{ date: 2026-11-14, what: link from output to earth removed }]'), 'changes: []\n']
       : [
           'changes:\n',
           ...changes.map(({ date, what }) => `  - { date: ${date}, what: ${written(what)} }\n`),

@@ -16,8 +16,8 @@ export interface TcpPatience {
 }
 
 const whenRefused =
-  'Is it switched on, is its remote control enabled, and is the port in the bench file right? ' +
-  'Is another program connected? some instruments serve only one program at a time.';
+  'Is it switched on, is its remote control enabled, and is the port the right one? ' +
+  'Is another program connected? Some instruments serve only one at a time.';
 
 /**
  * Opens a raw socket to an instrument.

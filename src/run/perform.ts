@@ -139,20 +139,24 @@ function noteTrip({ journal }: Performance, trip: Trip): void {
   }
 }
 
+const beforeYes =
+  'nothing was switched on. See to it and run again; only the word yes goes on, everything else ends the run';
+
 async function begin({ plan, bench, journal, operator, signal, from }: Performance): Promise<void> {
   await checkAllIsOff(bench);
   await checkMeters(bench);
   const wiring = wiringFor(plan.procedure, from);
   if (wiring.length > 0) {
     const acknowledged = await operator.acknowledge('wiring', wiring.join('\n'), signal);
-    if (acknowledged === 'refused') throw new StoppedByOperator('the wiring was not acknowledged');
+    if (acknowledged === 'refused')
+      throw new StoppedByOperator('the wiring was not acknowledged', { advice: beforeYes });
     journal.append({ event: 'caution', name: 'wiring', by: acknowledged });
   }
   for (const caution of plan.cautions) {
     signal.throwIfAborted();
     const acknowledged = await operator.acknowledge(caution, cautionOf(caution, plan.underTest), signal);
     if (acknowledged === 'refused')
-      throw new StoppedByOperator(`the caution "${caution}" was not acknowledged`);
+      throw new StoppedByOperator(`the caution "${caution}" was not acknowledged`, { advice: beforeYes });
     journal.append({ event: 'caution', name: caution, by: acknowledged });
   }
   await bench.load.prepare();
