@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { watchmanReportSchema } from '../../record/read-watchman-report.js';
 import { resultFormat } from '../json.js';
 import type { AsWritten } from './as-written.js';
 import { endedKeys, integritySchema, outcomeOrNone, outcomeSchema, probability } from './ended-schemas.js';
@@ -77,17 +78,7 @@ const takenOver = z.strictObject({
   lastStep: z.int().positive().describe('The last one.'),
 });
 
-const watchman = z.strictObject({
-  noticed: z.string().describe('When it noticed; ISO 8601, UTC.'),
-  why: z
-    .enum(['runner-vanished', 'runner-stopped-beating'])
-    .describe('Whether the program was gone, or gave no sign of life and was ended.'),
-  address: z.string().describe('Of the load.'),
-  attempts: z.int().nonnegative().describe('How many times it tried to switch the load off.'),
-  outcome: z.enum(['off', 'unconfirmed']).describe('"off" where the load said so when it was read back.'),
-  reason: z.string().nullable().describe('Why it could not be confirmed; null where it was.'),
-  took: z.number().nonnegative().describe('Seconds from noticing to the load read back, or given up.'),
-});
+const watchman = watchmanReportSchema.omit({ format: true }).strict();
 
 /** `run --json`, `analyse --json`, and findings.json. */
 export const runSchema = z
