@@ -10,6 +10,8 @@ export type Shape = keyof typeof outlines;
 const outlines = {
   circle: 'm-3.5 0a3.5 3.5 0 1 0 7 0a3.5 3.5 0 1 0-7 0z',
   'triangle-down': 'm0 5l-4.6-8h9.2z',
+  'triangle-up': 'm0-5l-4.6 8h9.2z',
+  hexagon: 'm-4.6 0l2.3-4h4.6l2.3 4-2.3 4h-4.6z',
   diamond: 'm0-5.2l5.2 5.2-5.2 5.2-5.2-5.2z',
   square: 'm-3.8-3.8h7.6v7.6h-7.6z',
   plus: 'm-5.5 0h11m-5.5-5.5v11',
