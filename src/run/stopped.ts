@@ -37,7 +37,8 @@ export class OperatorAbsentError extends RailproofError {
 
   constructor(steps: readonly string[]) {
     super(`the procedure needs someone at the bench for ${steps.join(', ')} and there is no terminal`, {
-      advice: 'run it in a terminal; --yes acknowledges wiring and cautions only',
+      advice:
+        'run it in a terminal, or with --view, which serves a page to answer on; --yes acknowledges wiring and cautions only',
     });
   }
 }

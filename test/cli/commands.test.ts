@@ -135,7 +135,7 @@ describe('run', () => {
       runs,
     );
     expect(stderr).toBe(
-      'the procedure needs someone at the bench for its wiring, its cautions and there is no terminal. Run it in a terminal; --yes acknowledges wiring and cautions only.\n',
+      'the procedure needs someone at the bench for its wiring, its cautions and there is no terminal. Run it in a terminal, or with --view, which serves a page to answer on; --yes acknowledges wiring and cautions only.\n',
     );
     expect(status).toBe(64);
   });

@@ -8,7 +8,8 @@ it('a procedure that needs someone says for which steps, and that --yes is not e
     exitCode: 64,
     message:
       'the procedure needs someone at the bench for step 2 (operator), its cautions and there is no terminal',
-    advice: 'run it in a terminal; --yes acknowledges wiring and cautions only',
+    advice:
+      'run it in a terminal, or with --view, which serves a page to answer on; --yes acknowledges wiring and cautions only',
   });
 });
 
