@@ -22,7 +22,8 @@ p{margin:.4rem 0;max-width:44rem}
 main p,main li,main dd,main td{unicode-bidi:isolate}
 :focus-visible{outline:3px solid var(--line-0);outline-offset:3px}
 h1,.question h2,.ending h2{width:fit-content;max-width:100%}
-h1:focus-visible,h2:focus-visible{outline-offset:.12rem}
+h2:focus-visible{outline-offset:.12rem}
+h1:focus-visible{outline:0;text-decoration:underline dotted 2px;text-underline-offset:.18em}
 .unseen{position:absolute;width:1px;height:1px;overflow:hidden;clip-path:inset(50%);white-space:nowrap}
 button,input{font:inherit;color:inherit;min-height:2.75rem;border-radius:0}
 button{cursor:pointer;padding:.45rem 1.2rem;border:2px solid var(--ink);background:var(--paper);font-weight:600}
@@ -62,14 +63,18 @@ main{padding-block:1rem 0}
 .figure .set{display:block;color:var(--soft);white-space:normal}
 .age{min-height:1.5em}
 .note:empty,.set:empty{display:none}
-.latest{font-weight:600}
+.now .age,.now .note,.now .latest{max-width:none}
+.latest{color:var(--soft)}
+.past .set{display:none}
+.past .age{min-height:0}
+.past .number{font-weight:400;color:var(--soft)}
 .aged .figures{outline:2px dashed var(--bad);outline-offset:.3rem;
  background:repeating-linear-gradient(135deg,transparent 0 9px,var(--panel) 9px 11px)}
 .old .age{color:var(--ink);font-weight:600}
 .aged .age,.silent .line{color:var(--bad);font-weight:700}
 figure{margin:0}
 .plot{height:min(22rem,60vh);min-height:15rem;width:100%}
-.plot:empty{display:none}
+.plot:empty{border:1px dashed var(--rule)}
 .plot .uplot{font-family:inherit}
 .legend{margin:.3rem 0 0}
 .legend span{display:inline-block;margin-right:1.2rem}
@@ -114,9 +119,8 @@ ol,ul{margin:.4rem 0;padding-left:0;list-style:none;max-width:44rem}
 .lost,.ending{display:grid;grid-template-columns:3.2rem 1fr;gap:0 1.1rem;margin:0 0 1.2rem;padding:1rem 1.2rem;
  background:var(--panel);border:3px solid var(--c);border-left-width:.6rem}
 .lost{--c:var(--bad)}
+#lost-text p:first-child{font-weight:700;font-size:1.15rem}
 .lost h2{font-size:1.5rem;color:var(--c);font-family:inherit;font-weight:700}
-.lost li{margin:.3rem 0;padding-left:1.1rem;text-indent:-1.1rem}
-.lost li::before{content:"– ";display:inline-block;width:1.1rem;text-indent:0}
 .ending{margin-top:1.2rem;border-width:1px;border-left-width:.6rem}
 .ending h2{font-size:1.5rem;color:var(--c)}
 .good{--c:var(--good)}.bad{--c:var(--bad)}.unsure{--c:var(--unsure)}.plain{--c:var(--soft)}
@@ -131,9 +135,6 @@ footer{margin-top:3rem;padding-block:1rem 2.5rem;color:var(--soft);font-size:.9r
 @media (min-width:62rem){
 .sheet{grid-template-columns:minmax(0,1.65fr) minmax(18rem,1fr);column-gap:3.5rem}
 .now{grid-column:1/-1}
-.curve{grid-column:1;grid-row:2/span 3}
-.way,.taken-note,.said{grid-column:2}
-.said{align-self:start}
 .figures{display:grid;grid-template-columns:1.4fr 1.4fr 1fr 1fr;column-gap:2rem;border-bottom:1px solid var(--rule)}
 .figure{grid-template-columns:1fr;align-content:start;border-bottom:0;padding-block:.5rem}
 .figure dd{grid-column:1;text-align:left}
@@ -144,6 +145,7 @@ footer{margin-top:3rem;padding-block:1rem 2.5rem;color:var(--soft);font-size:.9r
 .number{text-align:right}
 }
 @media (max-width:30rem){
+.plot:empty{display:none}
 .strip-inner,main,footer{padding-inline:.9rem}
 .stop{min-width:7rem;padding-inline:.7rem}
 .contact{width:2.6rem;height:1.3rem}

@@ -1,7 +1,7 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { look } from './look.js';
-import { sharedModules, shell } from './shell.js';
+import { mark, sharedModules, shell } from './shell.js';
 import { LiveViewError } from './view-error.js';
 
 export interface PageFile {
@@ -15,6 +15,7 @@ export type PageFiles = ReadonlyMap<string, PageFile>;
 const html = 'text/html; charset=utf-8';
 const script = 'text/javascript; charset=utf-8';
 const style = 'text/css; charset=utf-8';
+const picture = 'image/svg+xml; charset=utf-8';
 
 /**
  * All that the page is made of, read once: whatever is asked for later, no file is looked for.
@@ -29,6 +30,7 @@ export function readPageFiles(built: string, uplot: string): PageFiles {
     return new Map([
       ['/', { type: html, body: Buffer.from(shell) }],
       ['/look.css', { type: style, body: Buffer.from(look) }],
+      ['/mark.svg', { type: picture, body: Buffer.from(mark) }],
       ['/view-state.js', read(join(built, 'view/view-state.js'), script)],
       ...modules.map((name) => [`/page/${name}`, read(join(built, 'view/page', name), script)] as const),
       ...sharedModules.map((name) => [`/${name}`, read(join(built, name), script)] as const),

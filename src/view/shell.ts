@@ -13,6 +13,7 @@ export const shell = `<!doctype html>
 <meta name="viewport" content="width=device-width, initial-scale=1">
 <meta name="referrer" content="no-referrer">
 <title>Live view · railproof</title>
+<link rel="icon" href="/mark.svg" type="image/svg+xml">
 <link rel="stylesheet" href="/uplot.css">
 <link rel="stylesheet" href="/look.css">
 <script type="module" src="/page/main.js"></script>
@@ -27,7 +28,7 @@ export const shell = `<!doctype html>
 <main>
 <div class="unseen" id="alarm" role="alert"></div>
 <div class="unseen" id="status" role="status"></div>
-<noscript><p class="lost-words">This page needs scripts to follow the run. The terminal shows the same, and asks the same.</p></noscript>
+<noscript><p>This page needs scripts to follow the run. The terminal shows the same, and asks the same.</p></noscript>
 <section class="lost" id="lost" aria-labelledby="lost-heading" hidden>
 <svg class="sign" viewBox="0 0 60 60" aria-hidden="true"><path class="outline" d="M30 5L57 54H3Z"/><path class="mark" d="M30 22V38M30 46v1"/></svg>
 <div><h2 id="lost-heading"></h2><div id="lost-text"></div></div>
@@ -88,6 +89,9 @@ export const shell = `<!doctype html>
 </body>
 </html>
 `;
+
+/** Where several windows are open: a contact that closes a line, as the page has it for the load. */
+export const mark = `<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 32 32"><path d="M0 0H32V32H0Z" fill="#fdfcf9"/><path d="M1 21H9M23 21H31M10 20L22 9" fill="none" stroke="#1c2226" stroke-width="3" stroke-linecap="round"/><path d="M6 21a3 3 0 1 0 6 0a3 3 0 1 0 -6 0M20 21a3 3 0 1 0 6 0a3 3 0 1 0 -6 0" fill="#a3241c"/></svg>`;
 
 /** What the page imports beside `page` and the view's state: served as `/` and this name, from the same place in dist. */
 export const sharedModules = [

@@ -40,7 +40,6 @@ const kinds: Readonly<Partial<Record<Phase, Kind>>> = {
   halve: 'curve',
   return: 'curve',
   steadiness: 'curve',
-  overload: 'curve',
   share: 'curve',
   stack: 'curve',
   trace: 'trace',
@@ -83,13 +82,14 @@ function curveOf(
   title: string,
 ): Chart | undefined {
   const marks = points.flatMap((point, index) => {
-    const { current, voltage } = point;
+    const { voltage } = point;
+    const current = currentOf(point);
     return current === null || voltage === null
       ? []
       : [{ x: current, y: voltage, look: lookOf(point), joined: joined(point, points[index - 1]) }];
   });
   if (marks.length === 0) return undefined;
-  // What fell far down would press flat what held; it is drawn at the edge, and its voltage stands in the table.
+  // What fell far down would press flat what held; it is drawn at the edge, and what was read stands in the table.
   const held = marks.filter(({ look }) => look !== 'dropped');
   const y = range(
     (held.length > 0 ? held : marks).map((mark) => mark.y),
@@ -103,6 +103,11 @@ function curveOf(
     marks,
     rated: rated.current,
   };
+}
+
+/** A module that has let go delivers nothing: where it did so is told by the current that was asked for. */
+function currentOf({ outcome, set, current }: ViewedPoint): number | null {
+  return outcome === 'dropped' ? (set.current ?? current) : current;
 }
 
 function soakOf(points: readonly ViewedPoint[]): Chart | undefined {

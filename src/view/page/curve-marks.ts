@@ -94,6 +94,11 @@ function drawRated(plot: uPlot, rated: number, ratio: number, colour: (name: str
   ctx.setLineDash([]);
   ctx.fillStyle = colour('ink');
   ctx.font = `${13 * ratio}px system-ui, "Liberation Sans", sans-serif`;
+  // Above the frame, where no mark can lie under it.
   ctx.textAlign = 'right';
-  ctx.fillText(`nameplate ${rated} A`, x - 6 * ratio, bbox.top + 14 * ratio);
+  ctx.fillText(
+    `nameplate ${rated} A`,
+    Math.min(bbox.left + bbox.width, x + 40 * ratio),
+    bbox.top - 6 * ratio,
+  );
 }

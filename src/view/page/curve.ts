@@ -57,7 +57,7 @@ function begun(): uPlot {
       ...sizeNow(),
       legend: { show: false },
       cursor: { show: false },
-      padding: [16, 14, 0, 0],
+      padding: [24, 14, 0, 0],
       scales: {
         x: { time: false, range: () => [chart?.x.from ?? 0, chart?.x.to ?? 1] },
         y: { range: () => [chart?.y.from ?? 0, chart?.y.to ?? 1] },

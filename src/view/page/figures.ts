@@ -6,19 +6,22 @@ import { ageWords } from './wording.js';
 import { clockTime } from '../../quantity/spoken-time.js';
 
 const list = place('figures');
+const heading = place('figures-heading');
 const age = place('age');
 const section = age.parentElement;
 const rows = new Map<string, { readonly value: HTMLElement; readonly set: HTMLElement }>();
 
 export function showFigures(state: ViewState, seconds: number | undefined, line: Line): void {
   for (const figure of figuresShown(state)) showFigure(figure);
+  write(heading, line.kind === 'lost' || line.kind === 'over' ? 'Last read' : 'Now');
   write(place('note'), state.ended === undefined ? (state.figures.note ?? '') : '');
   const any = Object.keys(state.figures).some((name) => name !== 'note' && name !== 'setCurrent');
   const { text, old } = ageWords(seconds, any, line);
   write(age, text);
   section?.classList.toggle('old', old);
   section?.classList.toggle('aged', line.kind === 'lost');
-  const latest = state.notices.at(-1);
+  section?.classList.toggle('past', line.kind === 'over');
+  const latest = state.ended === undefined ? state.notices.at(-1) : undefined;
   show(place('latest'), latest !== undefined);
   if (latest !== undefined)
     write(place('latest'), `Latest notice, at ${clockTime(latest.t)}: ${latest.text}`);

@@ -14,6 +14,8 @@ const answered = place('answered');
 let open: Question | undefined;
 /** The question that was answered here. */
 let ours: number | undefined;
+/** What was last typed here, and to what; the runner asks the same again where it did not understand. */
+let typedHere: { readonly heading: string; readonly text: string } | undefined;
 let sending = false;
 /** The step in which the last question was answered; with it goes what was said of that. */
 let answeredIn = 0;
@@ -35,9 +37,12 @@ export function showQuestion({ question, stopping, ended, step }: ViewState): vo
     if (wasHere && ended === undefined) place('module').focus();
     return;
   }
+  const isAgain = typedHere?.heading === question.heading;
   lay(question);
   if (before === undefined) show(answered, false);
-  attend(question, wasHere);
+  if (isAgain) correct(question, typedHere?.text ?? '');
+  else attend(question, wasHere);
+  typedHere = undefined;
 }
 
 function tellOfAnswer({ id, heading: asked }: Question, stopped: boolean): void {
@@ -45,7 +50,7 @@ function tellOfAnswer({ id, heading: asked }: Question, stopped: boolean): void 
   const words = `“${asked}” was ${how}.`;
   show(answered, ours !== id && !stopped);
   write(answered, words);
-  tell(ours === id ? 'The answer was taken.' : words);
+  tell(ours === id ? 'The answer was sent.' : words);
 }
 
 /**
@@ -60,13 +65,25 @@ function attend({ heading: asked }: Question, wasHere: boolean): void {
   else alarm(`The runner asks: ${asked}`);
 }
 
+/** Of an answer that was not understood the person goes on where it was typed; the next letter replaces it. */
+function correct({ text: why }: Question, before: string): void {
+  const box = input();
+  if (box === null) return;
+  box.value = before;
+  box.setAttribute('aria-invalid', 'true');
+  box.focus();
+  box.select();
+  alarm(why);
+}
+
 function lay(question: Question): void {
   write(heading, question.heading);
   const lines = question.text.split('\n').filter((line) => line.trim() !== '');
+  // Wiring is gone through in its order; what else has several lines is told in them.
   text.replaceChildren(
-    lines.length > 1
-      ? made('ol', {}, ...lines.map((line) => made('li', {}, line)))
-      : made('p', {}, lines[0] ?? ''),
+    ...(question.answer === 'yes' && lines.length > 1
+      ? [made('ol', {}, ...lines.map((line) => made('li', {}, line)))]
+      : lines.map((line) => made('p', {}, line))),
   );
   show(refused, false);
   form.replaceChildren(...controls(question));
@@ -119,11 +136,13 @@ function input(): HTMLInputElement | null {
 async function answer(question: Question, given: string): Promise<void> {
   sending = true;
   ours = question.id;
+  typedHere = input() === null ? undefined : { heading: question.heading, text: given };
   const { sent, words } = await send('/answer', { question: question.id, answer: given });
   if (open?.id !== question.id) return;
   sending = false;
   if (sent === 'taken') return;
   ours = undefined;
+  typedHere = undefined;
   refuse(refusal(sent, words, expectedWords(question)));
 }
 

@@ -17,12 +17,12 @@ export function lineWords(line: Line): string {
   }
 }
 
-/** The alarm of a lost runner: what is so, what may be so, what to do. Its count stands in the heading only. */
+/** The alarm of a lost runner: what may be so, what is so, what to do. Its count stands in the heading only. */
 export function lostWords(line: Line & { readonly kind: 'lost' }, known: boolean): readonly string[] {
   return [
+    'The load may still be on. Look at the terminal.',
     ...(known ? ['What stands below is old.'] : []),
     ...reasons[line.why],
-    'The load may still be on. Look at the terminal.',
     'The watchman switches the load off when the runner is gone. If in doubt cut the power by hand.',
     ...(line.why === 'refused'
       ? []
@@ -52,7 +52,7 @@ export function ageWords(
   any: boolean,
   line: Line,
 ): { readonly text: string; readonly old: boolean } {
-  if (line.kind === 'over') return { text: any ? 'The last that was read.' : '', old: false };
+  if (line.kind === 'over') return { text: any ? '' : 'Nothing was read in the last step.', old: false };
   if (!any) return { text: 'Nothing was read in this step yet.', old: line.kind === 'lost' };
   const age = seconds === undefined ? 'some time ago' : `${spokenTime(Math.floor(seconds))} ago`;
   if (line.kind === 'lost') return { text: `Old: read ${age}, and nothing was heard since.`, old: true };
@@ -133,7 +133,11 @@ export function endShown({ how, reason, outcome, safety }: ViewedEnd): EndShown 
   const because = reason === null ? '' : `: ${reason}`;
   if (safety.some(({ confirmed }) => !confirmed)) return { heading: 'Look at the bench first', look: 'bad' };
   if (how === 'failed') return { heading: `Failed${because}`, look: 'bad' };
-  if (how === 'stopped') return { heading: `Stopped${because}`, look: 'unsure' };
+  if (how === 'stopped') {
+    // Most reasons begin with that word themselves.
+    const again = /^stopped (.+)$/s.exec(reason ?? '')?.[1];
+    return { heading: again === undefined ? `Stopped${because}` : `Stopped ${again}`, look: 'unsure' };
+  }
   return outcomes[outcome];
 }
 

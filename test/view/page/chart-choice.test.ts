@@ -32,6 +32,17 @@ describe('what is drawn', () => {
     expect(chartOf([point(5.6, { outcome: 'dropped', voltage: 3 })], run)?.y.from).toBeLessThan(3);
   });
 
+  it('has what fell where it was asked to be: a module that has let go delivers nothing', () => {
+    const fell = point(5.6, { phase: 'climb', outcome: 'dropped', current: 0.002, voltage: -0.001 });
+    const after = point(5.6, { phase: 'overload', outcome: 'measured', current: 0.002, voltage: 0.2 });
+    const chart = chartOf([point(4), fell, after], run);
+    expect(chart?.marks.map(({ x, look }) => [x, look])).toEqual([
+      [4, 'held'],
+      [5.6, 'dropped'],
+    ]);
+    expect(chart?.y.from).toBeGreaterThan(15);
+  });
+
   it('does not blow noise up to a slope', () => {
     const { y } = chartOf([point(0, { voltage: 15.2001 }), point(1, { voltage: 15.2 })], run) ?? {};
     expect((y?.to ?? 0) - (y?.from ?? 0)).toBeGreaterThan(0.07);

@@ -68,7 +68,7 @@ describe('the age of the figures', () => {
   it('is not made up where the page came later, and there is none without figures', () => {
     expect(ageWords(undefined, true, live).text).toContain('not known');
     expect(ageWords(3, false, live).text).toBe('Nothing was read in this step yet.');
-    expect(ageWords(300, true, over)).toEqual({ text: 'The last that was read.', old: false });
+    expect(ageWords(300, true, over)).toEqual({ text: '', old: false });
   });
 });
 
@@ -111,7 +111,7 @@ describe('the end', () => {
     expect(endShown(ended)).toEqual({ heading: 'Conforms', look: 'good' });
     expect(endShown({ ...ended, outcome: 'does-not-conform' }).look).toBe('bad');
     expect(endShown({ ...ended, how: 'stopped', reason: 'stopped on the page' }).heading).toBe(
-      'Stopped: stopped on the page',
+      'Stopped on the page',
     );
     expect(endShown({ ...ended, how: 'failed', reason: null })).toEqual({ heading: 'Failed', look: 'bad' });
     expect(endShown(unsafe)).toEqual({ heading: 'Look at the bench first', look: 'bad' });
