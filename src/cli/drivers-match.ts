@@ -12,6 +12,7 @@ import { alignTable } from '../report/align.js';
 import { jsonText } from '../report/json-text.js';
 import { fitted } from '../quantity/word-wrap.js';
 import { connectors } from './connectors.js';
+import type { MatchJson } from './schema/match-schema.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
 import { shelves, shipped } from './wiring.js';
@@ -145,13 +146,13 @@ function reasons(best: FamilyMatch, second: FamilyMatch | undefined): string[] {
 
 function matchAsJson(address: string, match: Match): string {
   const format = 'railproof/match 1';
-  return jsonText(
+  const json: MatchJson =
     match.kind === 'silent'
       ? { format, address, answered: false }
       : {
           ...{ format, address, answered: true, identity: match.identity, sendEnd: match.sendEnd },
           ...{ replyEnd: match.words.replyEnd, echo: match.words.echo, prompt: match.words.prompt },
           ...{ families: match.families, notAsked: match.left },
-        },
-  );
+        };
+  return jsonText(json);
 }

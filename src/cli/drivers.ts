@@ -4,6 +4,7 @@ import { shippedNames } from '../files/shipped-file.js';
 import { printable } from '../quantity/printable.js';
 import { fittedTable } from '../report/align.js';
 import { jsonText } from '../report/json-text.js';
+import type { DriversJson } from './schema/drivers-schema.js';
 import type { Streams } from './streams.js';
 import { TrialUsageError } from './trial-usage.js';
 import { shelves, shipped } from './wiring.js';
@@ -49,7 +50,7 @@ async function list(json: boolean, streams: Streams): Promise<ExitCode> {
   const found = await Promise.all(names.map(async (name) => (await readDriver(name, shelves)).value));
   if (json) {
     const listed = found.map(({ name, role, summary }) => ({ name, role, summary }));
-    streams.stdout.write(jsonText({ format: 'railproof/drivers 1', drivers: listed }));
+    streams.stdout.write(jsonText({ format: 'railproof/drivers 1', drivers: listed } satisfies DriversJson));
   } else {
     const rows = found.map(({ name, role, summary }) => [name, role, printable(summary)]);
     const lines = fittedTable(rows, ['left', 'left', 'left'], streams.stdout.columns, '');

@@ -6,6 +6,7 @@ import { spokenTime } from '../quantity/spoken-time.js';
 import type { Dimension, Seconds } from '../quantity/quantity.js';
 import { fittedTable } from '../report/align.js';
 import type { Plan } from '../run/plan.js';
+import type { PlanJson } from './schema/plan-schema.js';
 
 /** A plan for a person: what would be done, how long it takes, what the bench never allows; the first `done` steps of it are done. */
 export function planAsText(plan: Plan, done = 0, columns?: number): string {
@@ -52,7 +53,7 @@ function underTestInWords({ underTest: { circuit, name } }: Plan): string {
 }
 
 /** The same for a program; times in seconds, ceilings and what the source gives in A, V, W and °C. */
-export function planAsJson(plan: Plan, done = 0): object {
+export function planAsJson(plan: Plan, done = 0): PlanJson {
   const { source } = plan.bench.instruments;
   return {
     format: 'railproof/plan 1',

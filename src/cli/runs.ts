@@ -9,6 +9,7 @@ import { jsonText } from '../report/json-text.js';
 import { fittedTable } from '../report/align.js';
 import { recordNames } from './record-names.js';
 import { show } from './say.js';
+import type { RunsJson } from './schema/runs-schema.js';
 import type { Streams } from './streams.js';
 
 /** `railproof runs`: the records of a folder, oldest first, a line each. */
@@ -18,7 +19,7 @@ export function runs(
 ): ExitCode {
   const names = recordNames(wanted.folder);
   const rows: string[][] = [];
-  const listed: object[] = [];
+  const listed: RunsJson['runs'][number][] = [];
   for (const name of names) {
     const entry = entryOf(join(wanted.folder, name));
     const { ended, outcome, recommended, resumedFrom } = entry;
@@ -32,7 +33,7 @@ export function runs(
     listed.push({ run: name, ...entry });
   }
   if (wanted.json === true) {
-    streams.stdout.write(jsonText({ format: 'railproof/runs 1', runs: listed }));
+    streams.stdout.write(jsonText({ format: 'railproof/runs 1', runs: listed } satisfies RunsJson));
   } else if (rows.length === 0) {
     show(streams.stdout, `No records in ${printable(wanted.folder)}.\n`);
   } else {

@@ -11,6 +11,7 @@ import type { Seconds } from '../quantity/quantity.js';
 import { alignTable } from '../report/align.js';
 import { jsonText } from '../report/json-text.js';
 import { fitted, wordWrap } from '../quantity/word-wrap.js';
+import type { TrialJson } from './schema/trial-schema.js';
 
 /** Where nobody said how wide the screen is. */
 const usualWidth = 80;
@@ -159,7 +160,7 @@ export function trialAsJson(
   { meeting, pace, proposal }: Partial<Trial>,
   written: readonly string[],
 ): string {
-  return jsonText({
+  const json: TrialJson = {
     format: 'railproof/trial 1',
     driver: name,
     results: results.map(resultAsJson),
@@ -167,13 +168,15 @@ export function trialAsJson(
     ...(pace && { pace }),
     ...(proposal && { proposal }),
     ...(written.length > 0 && { written }),
-  });
+  };
+  return jsonText(json);
 }
 
-function resultAsJson({ part, name, sent, received, verdict, detail, seconds, bytes }: TrialResult): object {
-  const overTheLine = bytes.map(({ t, kind, bytes: each }) => ({
-    t,
-    [kind]: Buffer.from(each).toString('latin1'),
-  }));
+function resultAsJson(result: TrialResult): TrialJson['results'][number] {
+  const { part, name, sent, received, verdict, detail, seconds, bytes } = result;
+  const overTheLine = bytes.map(({ t, kind, bytes: each }) => {
+    const text = Buffer.from(each).toString('latin1');
+    return kind === 'sent' ? { t, sent: text } : { t, received: text };
+  });
   return { part, name, sent, received, verdict, detail, seconds, bytes: overTheLine };
 }

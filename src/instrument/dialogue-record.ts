@@ -23,7 +23,7 @@ export type TraceEntry = Opened | NotOpened | Sent | Received | Lost | Silent;
 
 export type Trace = (entry: TraceEntry) => void;
 
-const format = 'railproof/dialogue 1';
+export const dialogueFormat = 'railproof/dialogue 1';
 
 /**
  * The file format of a recorded dialogue is JSON Lines: a first line that names the format and the address,
@@ -32,7 +32,7 @@ const format = 'railproof/dialogue 1';
  * dialogue itself, or, from the first `opened` or `unreachable` on, those of a run, which all its dialogues share.
  */
 export function dialogueHeader(address: string): string {
-  return `${JSON.stringify({ format, address })}\n`;
+  return `${JSON.stringify({ format: dialogueFormat, address })}\n`;
 }
 
 export function dialogueLine(entry: TraceEntry): string {
@@ -59,7 +59,7 @@ function contentOf(entry: TraceEntry): string | number {
 /** The address named by the first line, or undefined when that is not what the line is. */
 export function readDialogueHeader(line: string): string | undefined {
   const header = objectIn(line);
-  return header?.['format'] === format && typeof header['address'] === 'string'
+  return header?.['format'] === dialogueFormat && typeof header['address'] === 'string'
     ? header['address']
     : undefined;
 }

@@ -10,10 +10,10 @@ export type RecordedAnswer =
   | { readonly t: Seconds; readonly asked: string; readonly answered: string }
   | { readonly t: Seconds; readonly asked: string; readonly stopped: string };
 
-const format = 'railproof/answers 1';
+export const answersFormat = 'railproof/answers 1';
 
 /** The file format is JSON Lines: a first line that names it, then an answer a line, in the order given. */
-export const answersHeader = `${JSON.stringify({ format })}\n`;
+export const answersHeader = `${JSON.stringify({ format: answersFormat })}\n`;
 
 export function answerLine(answer: RecordedAnswer): string {
   return `${JSON.stringify(answer)}\n`;
@@ -22,7 +22,7 @@ export function answerLine(answer: RecordedAnswer): string {
 /** The answers of a file, or the number of the first line that is not in the format. */
 export function readAnswers(text: string): readonly RecordedAnswer[] | { readonly badLine: number } {
   const [first, ...lines] = text.split('\n').map(parsed);
-  if (!isObject(first) || first['format'] !== format) return { badLine: 1 };
+  if (!isObject(first) || first['format'] !== answersFormat) return { badLine: 1 };
   // What stands behind the last end of line is nothing, or an answer that was cut off.
   const answers = lines.slice(0, -1);
   const bad = answers.findIndex((answer) => !isAnswer(answer));
