@@ -1,6 +1,6 @@
-import { z } from 'zod';
 import { benchSchema } from './bench-schema.js';
 import { criterionSchema } from './criterion.js';
+import { draftOf, type JsonSchema } from './draft-schema.js';
 import { driverSchema } from './driver-schema.js';
 import type { FileKind } from './file-kind.js';
 import { moduleSchema } from './module-schema.js';
@@ -9,7 +9,7 @@ import { stagesSchema } from './stages-schema.js';
 import { toleranceEntrySchema, toleranceSchema } from './tolerance-schema.js';
 import type { Vocabulary } from './vocabulary.js';
 
-export type JsonSchema = Readonly<Record<string, unknown>>;
+export type { JsonSchema };
 
 /**
  * What a file of this kind may hold, as a JSON Schema (draft 2020-12) by which an editor completes and
@@ -18,32 +18,28 @@ export type JsonSchema = Readonly<Record<string, unknown>>;
 export function jsonSchemaOf(kind: FileKind, vocabulary?: Vocabulary): JsonSchema {
   switch (kind) {
     case 'module':
-      return asWritten(moduleSchema);
+      return draftOf(moduleSchema);
     case 'bench':
-      return asWritten(benchSchema);
+      return draftOf(benchSchema);
     case 'driver':
-      return asWritten(driverSchema);
+      return draftOf(driverSchema);
     case 'procedure': {
-      const schema = asWritten(procedureSchema);
+      const schema = draftOf(procedureSchema);
       return vocabulary === undefined ? schema : spelledOut(schema, vocabulary);
     }
     case 'tolerance': {
-      const schema = asWritten(toleranceSchema);
+      const schema = draftOf(toleranceSchema);
       return vocabulary === undefined ? schema : withEntries(schema, vocabulary);
     }
     case 'stages':
-      return asWritten(stagesSchema);
+      return draftOf(stagesSchema);
   }
-}
-
-function asWritten(schema: z.ZodType): JsonSchema {
-  return z.toJSONSchema(schema, { target: 'draft-2020-12', io: 'input' });
 }
 
 function spelledOut(schema: JsonSchema, vocabulary: Vocabulary): JsonSchema {
   const properties = schema['properties'] as Readonly<Record<string, JsonSchema>>;
   const steps = vocabulary.stepKinds.map(({ kind, parameters }) =>
-    stepSchema(kind, withoutDialect(asWritten(parameters))),
+    stepSchema(kind, withoutDialect(draftOf(parameters))),
   );
   return {
     ...schema,
@@ -68,7 +64,7 @@ function stepSchema(kind: string, parameters: JsonSchema): JsonSchema {
 }
 
 function criterionOf(findings: readonly string[]): JsonSchema {
-  return ofOneFinding(withoutDialect(asWritten(criterionSchema)), nameOf(findings), [
+  return ofOneFinding(withoutDialect(draftOf(criterionSchema)), nameOf(findings), [
     'at-least',
     'at-most',
     'is',
@@ -78,7 +74,7 @@ function criterionOf(findings: readonly string[]): JsonSchema {
 function withEntries(schema: JsonSchema, vocabulary: Vocabulary): JsonSchema {
   const properties = schema['properties'] as Readonly<Record<string, JsonSchema>>;
   const items = ofOneFinding(
-    withoutDialect(asWritten(toleranceEntrySchema)),
+    withoutDialect(draftOf(toleranceEntrySchema)),
     nameOf(Object.keys(vocabulary.findings)),
     ['within', 'same', 'becomes'],
   );
