@@ -1,6 +1,9 @@
 import { spawn } from 'node:child_process';
 import { resolve } from 'node:path';
 import { messageOf } from '../errors/message-of.js';
+import { printable } from '../quantity/printable.js';
+import { say } from './say.js';
+import type { Streams } from './streams.js';
 
 /** What a system opens a file with, as a person's double click would; a path is an argument, never a text for a shell. */
 const openers: Partial<Readonly<Record<NodeJS.Platform, readonly [program: string, ...before: string[]]>>> = {
@@ -37,6 +40,15 @@ export async function openFile(path: string, environment: NodeJS.ProcessEnv): Pr
       done(status === 0 ? undefined : `the page could not be opened: ${program} gave up`);
     });
   });
+}
+
+/** Opens it, and says where it could not be. */
+export async function showFile(
+  path: string,
+  { stderr, environment }: Pick<Streams, 'stderr' | 'environment'>,
+): Promise<void> {
+  const problem = await openFile(path, environment);
+  if (problem !== undefined) say(stderr, `${printable(problem)}; open ${printable(path)} by hand.`);
 }
 
 function reason(error: Error, program: string): string {

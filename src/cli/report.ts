@@ -5,11 +5,10 @@ import { runFolderAt } from '../record/run-folder.js';
 import { runPage } from '../report/run-page/run-page.js';
 import { understand } from '../report/understand.js';
 import { statusOfRecord } from './exit-status.js';
-import { openFile } from './open-file.js';
+import { showFile } from './open-file.js';
 import { madeAt } from './made-at.js';
 import { checkPage, writePage } from './page-written.js';
 import { resumeHint } from './resume-hint.js';
-import { say } from './say.js';
 import type { Streams } from './streams.js';
 
 export interface ReportOptions {
@@ -30,9 +29,6 @@ export async function report(
   await writePage(to, runPage(result, madeAt(realClock.wall())), 'report');
   streams.stdout.write(`Report: ${printable(to)}\n`);
   streams.stderr.write(resumeHint(run, result));
-  if (open) {
-    const problem = await openFile(to, streams.environment);
-    if (problem !== undefined) say(streams.stderr, `${printable(problem)}; open ${printable(to)} by hand.`);
-  }
+  if (open) await showFile(to, streams);
   return statusOfRecord(result);
 }

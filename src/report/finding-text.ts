@@ -13,8 +13,8 @@ export function columnsOf(finding: Finding): UncertainText {
     : formatUncertain(finding.value, expanded ?? undefined, finding.dimension);
 }
 
-/** `5.088 ± 0.018 A`. */
+/** `5.088 ± 0.018 A`; a word alone. */
 export function inOneLine(finding: Finding): string {
   const { value, uncertainty, unit } = columnsOf(finding);
-  return uncertainty === '' ? `${value} ${unit}` : `${value} ± ${uncertainty} ${unit}`;
+  return uncertainty === '' ? `${value} ${unit}`.trimEnd() : `${value} ± ${uncertainty} ${unit}`;
 }

@@ -110,10 +110,15 @@ section{margin-top:2.6rem}
 .one{break-inside:avoid;margin-top:1.7rem}
 .one h3{display:flex;flex-wrap:wrap;gap:.1rem 1rem;justify-content:space-between;margin:0;padding-bottom:.25rem;
  border-bottom:1px solid var(--rule)}
-.sign{display:grid;grid-template-columns:repeat(auto-fit,minmax(15rem,1fr));gap:1.2rem 2rem;break-inside:avoid}
-.sign dl{margin:0}
+.one table{table-layout:fixed}
+.one th{width:17%}
+.one thead th:first-child{width:43%}
+.one thead th:nth-child(2){width:8%}
+.one thead th:nth-child(4){width:12%}
+.one caption{position:absolute;width:1px;height:1px;overflow:hidden;clip-path:inset(50%)}
+.sign{display:grid;grid-template-columns:5fr 5fr 3fr;gap:.7rem 1.4rem;margin:.8rem 0 0;break-inside:avoid}
 .sign dt{color:var(--soft);font-size:.85rem}
-.sign dd{margin:0 0 .6rem;height:2.3rem;border-bottom:1px solid var(--ink)}
+.sign dd{margin:0;height:2rem;border-bottom:1px solid var(--ink)}
 .wide{overflow-x:auto;margin:.9rem 0;overflow-wrap:normal}
 table{border-collapse:collapse;width:100%;font-size:.94rem;line-height:1.4;font-variant-numeric:tabular-nums}
 caption{text-align:left;padding-bottom:.35rem;font-size:.9rem}
@@ -147,7 +152,9 @@ svg .strong{font-weight:600}
 .chart .level{--c:var(--ink)}
 .chart .shape{fill:var(--paper);fill-opacity:.7;stroke:var(--c);stroke-width:1.5}
 .chart .whisker{fill:none;stroke:var(--c);stroke-width:2}
+.chart .reach{fill:none;stroke:var(--c);stroke-width:1}
 .chart .joining{fill:none;stroke:var(--c);stroke-width:.8}
+.chart .turn{stroke:var(--c);stroke-width:1;stroke-dasharray:2 3}
 .chart .shift .shaft{fill:none;stroke:var(--ink);stroke-width:2.2}
 .chart .shift .head{fill:var(--ink)}
 .chart .heat{fill:var(--heat);fill-opacity:.13}
@@ -164,6 +171,8 @@ ${series.join('\n')}
 @media (max-width:30rem){
 h1{font-size:1.6rem}
 .facts{grid-template-columns:1fr;gap:0}
+.one table{table-layout:auto;font-size:.88rem}
+.sign{grid-template-columns:1fr}
 .facts dd{margin-bottom:.45rem}
 .standing{grid-template-columns:2.2rem 1fr;gap:0 .8rem;padding:1rem}
 .standing svg{width:2.2rem;height:2.2rem}
@@ -177,6 +186,7 @@ h1{font-size:1.6rem}
 }
 @page{size:A4;margin:16mm 15mm 18mm}
 @media print{
+.sign dd{height:1.1cm}
 :root{color-scheme:light;${variables(light)};--paper:#fff}
 html{font-size:9.5pt}
 body{line-height:1.4}
@@ -188,7 +198,7 @@ section{margin-top:1.5rem}
 figure,.wide{margin-block:.7rem}
 th,td{padding-block:.22rem}
 footer{margin-top:1.5rem;padding-bottom:0;break-before:avoid}
-tr,li,figure,.standing{break-inside:avoid}
+tr,li,figure,.standing,.facts{break-inside:avoid}
 thead{display:table-header-group;break-after:avoid}
 caption{break-after:avoid}
 h1{font-size:20pt}h2{font-size:13pt}h3{font-size:11pt}

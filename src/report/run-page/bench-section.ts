@@ -3,7 +3,6 @@ import type { Dimension } from '../../quantity/quantity.js';
 import type { RunHeader } from '../../record/run-header.js';
 import { element, type Markup } from '../page/markup.js';
 import { section } from '../page/page.js';
-import { table } from '../page/table.js';
 import type { Result } from '../result.js';
 import { code, type Fact, facts } from './facts.js';
 
@@ -12,23 +11,8 @@ export function benchSection({ header }: Result): Markup {
   const { bench, instruments, modules } = header;
   return section(
     'The bench',
-    table(
-      'Instruments as they named themselves, and the error that their driver files promise at most.',
-      [
-        { heading: 'Post', as: 'name' },
-        { heading: 'Identity', as: 'long' },
-        { heading: 'Driver', as: 'text' },
-        { heading: 'Address', as: 'text' },
-        { heading: 'Promised', as: 'text' },
-      ],
-      instruments.map(({ role, identity, driver, address, accuracy }) => [
-        role,
-        identity,
-        driver,
-        code(address),
-        promisesIn(accuracy).map((text, index) => [index > 0 && element('br', {}), text]),
-      ]),
-    ),
+    facts(instruments.map((instrument): Fact => [instrument.role, instrumentInWords(instrument)])),
+    element('h3', {}, 'Between them and the module'),
     facts([
       ['Leads', `${resistanceInWords(bench.leads)}, there and back`],
       ['Voltage', voltageFrom[bench.voltageFrom]],
@@ -43,9 +27,25 @@ export function benchSection({ header }: Result): Markup {
   );
 }
 
+type Instrument = RunHeader['instruments'][number];
+
+/** As it named itself; by which driver and where it was spoken to; and what that driver's file promises. */
+function instrumentInWords({ identity, driver, address, accuracy }: Instrument): Markup {
+  const promised = promisesIn(accuracy);
+  return element(
+    'span',
+    {},
+    identity,
+    element('br', {}),
+    `driver ${driver} at `,
+    code(address),
+    promised.length > 0 && [element('br', {}), `wrong at most by: ${promised.join(', ')}`],
+  );
+}
+
 const voltageFrom: Readonly<Record<RunHeader['bench']['voltageFrom'], string>> = {
-  'meter-at-module': 'of the module: read by the meter at its terminals',
-  'load-terminals': 'of the module: read by the load, what the leads take added by calculation',
+  'meter-at-module': 'read by the meter at the terminals of the module',
+  'load-terminals': 'read by the load; what the leads take is added by calculation',
 };
 
 function resistanceInWords(given: RunHeader['bench']['leads']): string {
@@ -71,10 +71,10 @@ const dimensions: Readonly<Record<string, Dimension>> = {
   temperature: 'temperature-difference',
 };
 
-function promisesIn(accuracy: RunHeader['instruments'][number]['accuracy']): readonly string[] {
+function promisesIn(accuracy: Instrument['accuracy']): readonly string[] {
   return Object.entries(accuracy).flatMap(([reading, { ofReading, fixed }]) => {
     const dimension = Object.hasOwn(dimensions, reading) ? dimensions[reading] : undefined;
     if (dimension === undefined) return [];
-    return [`${reading} ±(${asGiven(ofReading, 'ratio')} + ${asGiven(fixed, dimension)})`];
+    return [`${reading} ${asGiven(ofReading, 'ratio')} of the reading + ${asGiven(fixed, dimension)}`];
   });
 }

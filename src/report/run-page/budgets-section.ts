@@ -2,12 +2,13 @@ import { coverageOf } from '../../analysis/coverage-of.js';
 import type { StepEvidence } from '../../analysis/evidence.js';
 import type { Finding } from '../../analysis/finding.js';
 import { formatInterval, formatQuantity } from '../../quantity/format-quantity.js';
+import { listed } from '../../quantity/listed.js';
 import type { Dimension } from '../../quantity/quantity.js';
-import { inOneLine } from '../finding-text.js';
 import { element, type Markup } from '../page/markup.js';
 import { bullets, section } from '../page/page.js';
 import { table } from '../page/table.js';
 import type { Result } from '../result.js';
+import { counted, foundInWords } from './found-in-words.js';
 
 /** What each finding rests on: the readings, and where its uncertainty comes from. */
 export function budgetsSection({ findings, evidence }: Result): Markup | undefined {
@@ -25,33 +26,45 @@ export function budgetsSection({ findings, evidence }: Result): Markup | undefin
           'Kind A comes of the scatter of readings, kind B of anything else; the share is that of the variance. ' +
           'Degrees of freedom are ∞ where a value is taken as known (JCGM 100:2008, 4.2, 4.3, 5.1 and G.4).',
       ),
-    budgeted.map((finding) => budgetOf(finding, behind(finding))),
+    alike(budgeted).map(([first, ...others]) => budgetOf([first, ...others], behind(first))),
     others.length > 0 && element('h3', {}, 'Without a budget: words, bounds and choices'),
     bullets(
       others.map((finding) => [
         element('strong', {}, finding.name),
-        ` ${finding.bound === 'least' ? '≥ ' : ''}${inOneLine(finding)}. ${behind(finding)}`,
+        ` ${foundInWords(finding)}. ${behind(finding)}`,
       ]),
     ),
   );
 }
 
-function budgetOf(finding: Finding, behind: string): Markup {
-  const { name, budget, dimension, standardUncertainty: combined } = finding;
+type Alike = readonly [Finding, ...Finding[]];
+
+/** What one finding took over from another whole has one budget with it. */
+function alike(findings: readonly Finding[]): readonly Alike[] {
+  const groups = new Map<string, [Finding, ...Finding[]]>();
+  for (const finding of findings) {
+    const { value, dimension, bound, step, budget } = finding;
+    const key = JSON.stringify([value, dimension, bound, step, budget]);
+    const group = groups.get(key);
+    if (group === undefined) groups.set(key, [finding]);
+    else group.push(finding);
+  }
+  return [...groups.values()];
+}
+
+function budgetOf(findings: Alike, behind: string): Markup {
+  const [finding] = findings;
+  const { budget, dimension, standardUncertainty: combined } = finding;
+  const names = listed(findings.map(({ name }) => name));
   const inUnit = (uncertainty: number): string => uncertaintyInWords(uncertainty, combined, dimension);
   const coverage = coverageOf(finding);
   return element(
     'div',
     { class: 'one' },
-    element(
-      'h3',
-      {},
-      element('span', {}, name),
-      element('span', {}, `${finding.bound === 'least' ? '≥ ' : ''}${inOneLine(finding)}`),
-    ),
+    element('h3', {}, element('span', {}, names), element('span', {}, foundInWords(finding))),
     element('p', {}, intervalInWords(finding), ' ', behind),
     table(
-      `Uncertainty budget of ${name}.`,
+      `Uncertainty budget of ${names}.`,
       [
         { heading: 'Source', as: 'name' },
         { heading: 'Kind' },
@@ -101,15 +114,6 @@ function readingsInWords(steps: readonly StepEvidence[], { step: number }: Findi
   );
 }
 
-export function counted(count: number, what: string): string {
-  return `${grouped(count)} ${what}${count === 1 ? '' : 's'}`;
-}
-
-/** Thousands apart. */
-function grouped(count: number): string {
-  return String(count).replace(/\B(?=(\d{3})+$)/g, '\u2009');
-}
-
 /** Below which a contribution is what adding and multiplying lose. */
 const nothing = 1e-9;
 
@@ -127,5 +131,5 @@ function shareInWords(uncertainty: number, combined: number | null): string {
 
 function freedomInWords(degrees: number): string {
   if (!Number.isFinite(degrees)) return '∞';
-  return degrees > 1e6 ? 'above 10⁶' : degrees.toFixed(Number.isInteger(degrees) ? 0 : 1);
+  return degrees > 1000 ? 'above 1000' : degrees.toFixed(Number.isInteger(degrees) ? 0 : 1);
 }

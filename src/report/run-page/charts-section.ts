@@ -4,7 +4,9 @@ import type { Result } from '../result.js';
 import { curveFigure } from '../run-charts/curve-chart.js';
 import { limitTraceFigure } from '../run-charts/limit-trace-chart.js';
 import { residualsFigure } from '../run-charts/residuals-chart.js';
+import { sharesFigure } from '../run-charts/shares-chart.js';
 import { soakFigure } from '../run-charts/soak-chart.js';
+import { stackFigure } from '../run-charts/stack-chart.js';
 
 type Figure = (result: Result) => Markup | undefined;
 
@@ -14,6 +16,8 @@ const charts: readonly (readonly [heading: string, figure: Figure])[] = [
   ['How well the line fits', residualsFigure],
   ['At the limit and beyond', limitTraceFigure],
   ['Held for long', soakFigure],
+  ['How they share the load', sharesFigure],
+  ['How the string stands', stackFigure],
 ];
 
 export function chartsSection(result: Result): Markup | undefined {

@@ -1,11 +1,11 @@
 import { findingNamed } from '../../analysis/finding.js';
 import type { Outcome } from '../../judgement/judge.js';
-import { inOneLine } from '../finding-text.js';
 import { element, type Markup } from '../page/markup.js';
 import { section } from '../page/page.js';
 import { table } from '../page/table.js';
 import { probabilityInWords } from '../record-words.js';
 import type { Result } from '../result.js';
+import { foundInWords } from './found-in-words.js';
 
 const verdicts: Readonly<Record<Outcome, { readonly words: string; readonly look: string }>> = {
   conforms: { words: 'conforms', look: 'good' },
@@ -27,7 +27,7 @@ export function decisionsSection({ decisions, findings }: Result): Markup | unde
     table(
       'Guarded by the expanded uncertainty: what lies closer to its limit than that is undecided (JCGM 106, ILAC-G8).',
       [
-        { heading: 'Required of', as: 'name' },
+        { heading: 'Finding', as: 'name' },
         { heading: 'Requirement', as: 'text' },
         { heading: 'Found', as: 'fixed' },
         { heading: 'Decision', as: 'fixed' },
@@ -35,11 +35,10 @@ export function decisionsSection({ decisions, findings }: Result): Markup | unde
       ],
       decisions.map(({ finding, requirement, outcome, probability, note }) => {
         const found = findingNamed(findings, finding);
-        const least = found?.bound === 'least' ? '≥ ' : '';
         return [
           finding,
           requirement,
-          found === undefined ? 'nothing' : least + inOneLine(found),
+          found === undefined ? 'nothing' : foundInWords(found),
           verdict(outcome),
           [probability === null ? '' : `probability of conformity ${probabilityInWords(probability)}`, note]
             .filter((part) => part !== '')

@@ -31,11 +31,10 @@ export function recommendationSection(result: Result): Markup | undefined {
       'Factor by factor.',
       [
         { heading: 'Step', as: 'name' },
-        { heading: '' },
         { heading: 'Value', as: 'number' },
         { heading: 'Why', as: 'long' },
       ],
-      rows.map(([sign, value, name, why]) => [name, sign, value, why]),
+      rows.map(([sign, value, name, why]) => [name, `${sign} ${value}`.trimStart(), why]),
     ),
   );
 }

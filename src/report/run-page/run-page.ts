@@ -27,6 +27,7 @@ export function runPage(result: Result, made: Made): string {
     answer: answerSection(result),
     sections: [
       decisionsSection(result),
+      signatureSection(result),
       chartsSection(result),
       recommendationSection(result),
       findingsSection(result),
@@ -35,7 +36,6 @@ export function runPage(result: Result, made: Made): string {
       benchSection(result),
       cautionsSection(result),
       recordSection(result),
-      signatureSection(result),
     ],
     made,
     pageKind: 'report',

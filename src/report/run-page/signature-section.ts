@@ -13,20 +13,18 @@ export function signatureSection(result: Result): Markup {
       {},
       'Record ',
       code(run),
-      fingerprints.lastSeal !== undefined && [', last seal ', code(fingerprints.lastSeal.slice(0, 16)), '…'],
+      fingerprints.lastSeal !== undefined && [', last seal ', code(`${fingerprints.lastSeal.slice(0, 16)}…`)],
       '. ',
       header.bench.simulated && 'The bench was simulated: a signature here releases no module. ',
       !isWhole(result) &&
         'The test is not whole: a signature here says that this was read, and releases nothing.',
     ),
-    element('div', { class: 'sign' }, lines('Measured by'), lines('Checked by')),
+    element('dl', { class: 'sign' }, lines('Measured by'), lines('Checked by')),
   );
 }
 
-function lines(who: string): Markup {
-  return element(
-    'dl',
-    {},
-    [who, 'Signature', 'Date'].map((word) => [element('dt', {}, word), element('dd', {}, '\u00a0')]),
+function lines(who: string): readonly Markup[] {
+  return [who, 'Signature', 'Date'].map((word) =>
+    element('div', {}, element('dt', {}, word), element('dd', {}, '\u00a0')),
   );
 }

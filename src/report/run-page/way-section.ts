@@ -6,7 +6,7 @@ import { section } from '../page/page.js';
 import { table } from '../page/table.js';
 import type { Result } from '../result.js';
 import { takenOver } from '../taken-over.js';
-import { counted } from './budgets-section.js';
+import { counted } from './found-in-words.js';
 
 /** How the run went: its steps, and what happened on the way. */
 export function waySection(result: Result): Markup {
@@ -23,7 +23,12 @@ export function waySection(result: Result): Markup {
         { heading: 'Sort', as: 'fixed' },
         { heading: 'What', as: 'long' },
       ],
-      kept.map((happening) => [when(happening), happening.step ?? '', sorts[happening.kind], happening.text]),
+      inputsTogether(kept).map((row) => [
+        when(row),
+        row.step ?? '',
+        sorts[row.kind],
+        row.texts.map((text, index) => [index > 0 && element('br', {}), text]),
+      ]),
     ),
     missed > 0 &&
       element(
@@ -44,9 +49,32 @@ const sorts: Readonly<Record<Happening['kind'], string>> = {
   recovery: 'recovery',
 };
 
-function when({ first, last, times }: Happening): string {
-  if (times === 1) return clockTime(first);
-  return `${clockTime(first)} to ${clockTime(last)}, ${times} times`;
+/** A happening as a row; of one sort it may be several. */
+interface Row extends Pick<Happening, 'kind' | 'step' | 'first' | 'last'> {
+  readonly texts: readonly string[];
+}
+
+/** A search switches the load again and again: what it did to it in one step is one row. */
+function inputsTogether(kept: readonly Happening[]): readonly Row[] {
+  const rows: Row[] = [];
+  const inputs = new Map<number | undefined, number>();
+  for (const { kind, step, first, last, text, times } of kept) {
+    const said = times === 1 ? text : `${text}, ${times} times`;
+    const at = kind === 'input' ? inputs.get(step) : undefined;
+    const before = at === undefined ? undefined : rows[at];
+    if (at !== undefined && before !== undefined) {
+      rows[at] = { ...before, last: Math.max(before.last, last), texts: [...before.texts, said] };
+      continue;
+    }
+    if (kind === 'input') inputs.set(step, rows.length);
+    rows.push({ kind, step, first, last, texts: [said] });
+  }
+  return rows;
+}
+
+function when({ first, last }: Row): string {
+  const [from, to] = [clockTime(first), clockTime(last)];
+  return from === to ? from : `${from} to ${to}`;
 }
 
 function stepsTable(result: Result): Markup | undefined {
