@@ -19,6 +19,7 @@ h1,h2{font-family:Charter,"Bitstream Charter","Sitka Text",Cambria,"Noto Serif",
 h1{font-size:2rem;margin:.1rem 0 .2rem}
 h2{font-size:1.25rem;margin:0 0 .6rem}
 p{margin:.4rem 0;max-width:44rem}
+p,li{text-wrap:pretty}
 main p,main li,main dd,main td{unicode-bidi:isolate}
 :focus-visible{outline:3px solid var(--line-0);outline-offset:3px}
 h1,.question h2,.ending h2{width:fit-content;max-width:100%}
@@ -97,6 +98,8 @@ ol,ul{margin:.4rem 0;padding-left:0;list-style:none;max-width:44rem}
 .steps .at .state{color:var(--ink)}
 .steps .at svg path{fill:currentColor}
 .cautions li,.notices li{padding:.45rem 0;border-bottom:1px solid var(--rule)}
+.cautions ol{padding-left:1.5rem;list-style:decimal}
+.cautions li li{padding:.1rem 0;border:0}
 .cautions strong{display:block}
 .cautions .by,.notices time{display:block;font-size:.85rem;color:var(--soft)}
 .cautions .waits{color:var(--ink);font-weight:700}
@@ -156,6 +159,7 @@ footer{margin-top:3rem;padding-block:1rem 2.5rem;color:var(--soft);font-size:.9r
 .question form{flex-direction:column;align-items:stretch}
 .field{flex-basis:auto}
 }
+@media (hover:none) and (pointer:coarse){.stop-how{display:none}}
 @media (prefers-reduced-motion:no-preference){.stop,.question button{transition:background-color .12s}}
 @media (forced-colors:active){.stop-word::before{background:CanvasText}}
 @media print{.strip{position:static}.stop,form{display:none}}

@@ -9,11 +9,12 @@ export const showCautions: (cautions: ViewState['cautions']) => void = whenChang
 });
 
 function caution({ name, text, by }: ViewedCaution): HTMLElement {
+  const lines = text.split('\n');
   return made(
     'li',
     {},
     made('strong', {}, name.charAt(0).toUpperCase() + name.slice(1).replaceAll('-', ' ')),
-    ...text.split('\n').flatMap((line, index) => (index === 0 ? [line] : [made('br'), line])),
+    ...(lines.length > 1 ? [made('ol', {}, ...lines.map((line) => made('li', {}, line)))] : lines),
     made('span', { class: by === undefined ? 'by waits' : 'by' }, cautionWords({ by })),
   );
 }

@@ -82,6 +82,22 @@ describe('what is asked', () => {
     expect(complaints).toEqual([]);
   });
 
+  it('and all else is reached by the Tab key, in the order in which it stands', async () => {
+    const { view, page } = await viewed({ step: 2, points: [point(0), point(1)] });
+    view.ask(wiring, never).catch(() => undefined);
+    await page.getByRole('heading', { name: wiring.heading }).waitFor();
+    await page.keyboard.press('Shift+Tab');
+    expect(await atKeyboard(page)).toBe('stop');
+    const reached: string[] = [];
+    for (let count = 1; count <= 4; count += 1) {
+      await page.keyboard.press('Tab');
+      reached.push(await atKeyboard(page));
+      // What is opened comes next.
+      if (count === 3) await page.keyboard.press('Enter');
+    }
+    expect(reached).toEqual(['Yes, go on', 'No, stop here', 'The last points as a table', 'points']);
+  });
+
   it('keeps what is being typed while the figures come, and says why an answer can not be taken', async () => {
     const { view, page } = await viewed({ step: 1 });
     const answer = view.ask(warmth, never);
@@ -126,6 +142,22 @@ describe('what is asked', () => {
     );
     expect(await page.locator('#question').isHidden()).toBe(true);
     expect(await atKeyboard(page)).toBe('module');
+  });
+});
+
+describe('the cautions', () => {
+  it('stand on the page with who acknowledged them, the wiring line by line', async () => {
+    const cautions = [
+      { name: 'wiring', text: wiring.text, by: 'operator' },
+      { name: 'hot-surfaces', text: 'It gets hot.', by: undefined },
+    ] as const;
+    const { view, page } = await viewed({ cautions });
+    const items = page.locator('#cautions > li');
+    expect(await items.first().locator('li').allInnerTexts()).toEqual(wiring.text.split('\n'));
+    expect(await items.first().innerText()).toMatch(/^Wiring\n.*Acknowledged by the person at the bench\.$/s);
+    expect(await items.last().innerText()).toMatch(/Waits to be acknowledged\.$/);
+    view.show({ kind: 'caution', caution: { ...cautions[1], by: '--yes' } });
+    await items.last().getByText('Acknowledged beforehand, with --yes.').waitFor();
   });
 });
 
