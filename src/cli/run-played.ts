@@ -3,8 +3,9 @@ import type { Operator } from '../steps/operator.js';
 import type { RunView } from './live-view/run-view.js';
 import type { LoadedPlan } from './load-plan.js';
 import { performPlan, type PerformOptions, type PlanPerformed } from './perform-plan.js';
-import { together } from './progress/together.js';
+import { counted } from './progress/counted.js';
 import { runProgress } from './progress/run-progress.js';
+import { RunSoFar } from './progress/run-so-far.js';
 import { say } from './say.js';
 import type { StopWishes } from './stop-signals.js';
 import type { Streams } from './streams.js';
@@ -26,8 +27,9 @@ export async function playPlain(
   { world, operator, runs, stop, streams, view }: Stage,
   recorded?: PerformOptions['recorded'],
 ): Promise<PlanPerformed> {
-  const atTerminal = await runProgress(streams, loaded.plan, world.clock, loaded.resumed?.from.steps);
-  const watch = view === undefined ? atTerminal : together(atTerminal, view.progress(world.clock));
+  const run = new RunSoFar(loaded.plan, world.clock, loaded.resumed?.from.steps ?? 0);
+  const atTerminal = await runProgress(streams, run);
+  const watch = counted(run, atTerminal, ...(view === undefined ? [] : [view.progress(run)]));
   const { signal, hurry } = stop;
   try {
     return await performPlan(loaded, world, {

@@ -5,7 +5,12 @@ import { EventPage } from './event-page.js';
 import { applied, type ViewMessage, type ViewState } from './view-state.js';
 
 /** What a run tells of itself; a page is also told everything, first of all. */
-export type Told = Exclude<ViewMessage, { kind: 'everything' }>;
+export type Told = Exclude<ViewMessage, { kind: 'everything' | 'beat' }>;
+
+export interface Times {
+  readonly elapsed: Seconds;
+  readonly remaining: Seconds;
+}
 
 /** Eight a second: more than an eye reads, and a small cost. */
 const figuresEvery: Seconds = 0.125;
@@ -54,12 +59,17 @@ export class Audience {
     }
     if (message.kind === 'step') this.#waiting = undefined;
     // What comes after it must not be set back by it.
-    if (message.kind === 'ended' || message.kind === 'beat') this.#tellWaiting();
+    if (message.kind === 'ended') this.#tellWaiting();
     this.#tell(message);
   }
 
-  beat(): void {
-    const event = eventOf({ kind: 'beat' });
+  /** So that silence means that the runner is lost. */
+  beat(times: Times | undefined): void {
+    const beat = { kind: 'beat', ...(this.#state.ended === undefined && times) } as const;
+    // What comes after it must not be set back by it.
+    this.#tellWaiting();
+    this.#state = applied(this.#state, beat);
+    const event = eventOf(beat);
     for (const page of this.#pages) page.beat(event);
   }
 
@@ -95,7 +105,7 @@ export class Audience {
     if (this.#pages.size === 0) return;
     const event = eventOf(message);
     for (const page of this.#pages) {
-      if (message.kind === 'figures' || message.kind === 'beat') page.tellLatest(event);
+      if (message.kind === 'figures') page.tellLatest(event);
       else page.tell(event);
     }
   }

@@ -9,8 +9,10 @@ export type Random = (bytes: number) => Uint8Array;
 
 export type Shown =
   | { readonly kind: 'opened'; readonly session: string }
-  /** It was opened before; `fresh` where it is time for another one. */
+  /** It was opened before; `fresh` where it is time for another one, which otherwise was made already. */
   | { readonly kind: 'spent'; readonly fresh: string | undefined }
+  /** The same, and so was the last one that there will be. */
+  | { readonly kind: 'used-up' }
   | { readonly kind: 'unknown' };
 
 /**
@@ -35,7 +37,7 @@ export class Entry {
 
   /** Somebody comes with a token. */
   show(token: string): Shown {
-    if (isOneOf(token, this.#spent)) return { kind: 'spent', fresh: this.#renewed() };
+    if (isOneOf(token, this.#spent)) return this.#shownAgain();
     if (!isOneOf(token, [this.#token])) return { kind: 'unknown' };
     const session = this.#secret();
     this.#spent.push(this.#token);
@@ -47,12 +49,12 @@ export class Entry {
     return isOneOf(session, this.#sessions);
   }
 
-  /** Undefined while the last one was not opened yet, and once there were enough. */
-  #renewed(): string | undefined {
-    if (this.#afresh === mostAfresh || !this.#spent.includes(this.#token)) return undefined;
+  #shownAgain(): Shown {
+    if (!this.#spent.includes(this.#token)) return { kind: 'spent', fresh: undefined };
+    if (this.#afresh === mostAfresh) return { kind: 'used-up' };
     this.#afresh += 1;
     this.#token = this.#secret();
-    return this.#token;
+    return { kind: 'spent', fresh: this.#token };
   }
 
   #secret(): string {

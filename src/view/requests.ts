@@ -2,7 +2,7 @@ import type { IncomingMessage, ServerResponse } from 'node:http';
 import { z } from 'zod';
 import type { Audience } from './audience.js';
 import type { Entry } from './entry.js';
-import type { PageFiles } from './page-files.js';
+import type { PageFile, PageFiles } from './page-files.js';
 import type { Questions } from './questions.js';
 import { readBody } from './read-body.js';
 
@@ -36,6 +36,8 @@ const words = {
   unknown: 'Open the address that the terminal shows; it opens once.',
   spent:
     'This address was opened before, and opens once: the page is where that was done. To open it here, take the new address that the terminal shows.',
+  usedUp:
+    'This address was opened before, and opens once. The terminal shows no more new ones for this run: answer and stop it there, or on a page that is open.',
 };
 
 /** Answers one request. Whoever comes without the cookie, or under another name, learns nothing. */
@@ -79,50 +81,77 @@ function enter(token: string, response: ServerResponse, { entry, port, tellAfres
       if (shown.fresh !== undefined) tellAfresh(shown.fresh);
       refuse(response, 403, words.spent);
       return;
+    case 'used-up':
+      refuse(response, 403, words.usedUp);
+      return;
     case 'unknown':
       refuse(response, 403, words.unknown);
   }
 }
 
+/** One thing that a page may ask for or send. */
+interface Way {
+  readonly method: 'GET' | 'POST';
+  readonly answer: (request: IncomingMessage, response: ServerResponse, desk: Desk) => void | Promise<void>;
+}
+
+/** Those beside the files of the page, by their paths. */
+const ways: ReadonlyMap<string, Way> = new Map<string, Way>([
+  ['/events', { method: 'GET', answer: followed }],
+  ['/answer', { method: 'POST', answer: answered }],
+  ['/stop', { method: 'POST', answer: stopped }],
+]);
+
+const wrongMethod = { GET: 'This can only be read.', POST: 'This can only be sent to.' };
+
 async function answerKnown(
   request: IncomingMessage,
   response: ServerResponse,
   path: string,
-  { files, audience, questions, stop }: Desk,
+  desk: Desk,
 ): Promise<void> {
-  const { method } = request;
-  const file = files.get(path);
-  if (path === '/events' || file !== undefined) {
-    if (method !== 'GET') refuse(response, 405, 'This can only be read.', { allow: 'GET' });
-    else if (file !== undefined) response.writeHead(200, { 'content-type': file.type }).end(file.body);
-    else if (audience.isFull) refuse(response, 503, 'Too many pages follow this run.');
-    else audience.join(response);
-    return;
-  }
-  if (path !== '/answer' && path !== '/stop') {
-    refuse(response, 404, 'There is no such page.');
-    return;
-  }
-  if (method !== 'POST') {
-    refuse(response, 405, 'This can only be sent to.', { allow: 'POST' });
-    return;
-  }
-  const { origin, host = '', 'content-type': type = '' } = request.headers;
-  if (origin !== `http://${host}`) {
-    refuse(response, 403, words.unknown);
-    return;
-  }
-  if (!/^application\/json(;|$)/i.test(type)) {
-    refuse(response, 415, 'Only JSON is taken.');
-    return;
-  }
-  if (path === '/stop') {
-    // What else is sent with the wish changes nothing of it.
-    request.resume();
-    stop();
-    response.writeHead(202).end();
-    return;
-  }
+  const way = ways.get(path) ?? fileWay(desk.files.get(path));
+  if (way === undefined) refuse(response, 404, 'There is no such page.');
+  else if (request.method !== way.method)
+    refuse(response, 405, wrongMethod[way.method], { allow: way.method });
+  else if (way.method === 'GET' || isOurs(request, response)) await way.answer(request, response, desk);
+}
+
+function fileWay(file: PageFile | undefined): Way | undefined {
+  if (file === undefined) return undefined;
+  const { type, body } = file;
+  return {
+    method: 'GET',
+    answer: (_, response) => void response.writeHead(200, { 'content-type': type }).end(body),
+  };
+}
+
+/** Whether a page of this view sends it, as only such a page can: no form of another one sends JSON. */
+function isOurs({ headers }: IncomingMessage, response: ServerResponse): boolean {
+  const { origin, host = '', 'content-type': type = '' } = headers;
+  if (origin !== `http://${host}`) refuse(response, 403, words.unknown);
+  else if (!/^application\/json(;|$)/i.test(type)) refuse(response, 415, 'Only JSON is taken.');
+  else return true;
+  return false;
+}
+
+function followed(_: IncomingMessage, response: ServerResponse, { audience }: Desk): void {
+  if (audience.isFull) refuse(response, 503, 'Too many pages follow this run.');
+  else audience.join(response);
+}
+
+/** What else is sent with the wish changes nothing of it. */
+function stopped(request: IncomingMessage, response: ServerResponse, { stop }: Desk): void {
+  request.resume();
+  stop();
+  response.writeHead(202).end();
+}
+
+async function answered(
+  request: IncomingMessage,
+  response: ServerResponse,
+  { questions }: Desk,
+): Promise<void> {
   const body = await readBody(request);
   if (body.kind === 'gone') response.destroy();
   else if (body.kind === 'too-long') refuse(response, 413, 'That is longer than an answer may be.');

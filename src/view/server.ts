@@ -1,7 +1,7 @@
 import { createServer, type Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import type { Clock } from '../clock/clock.js';
-import { Audience, type Told } from './audience.js';
+import { Audience, type Times, type Told } from './audience.js';
 import { Entry, type Random } from './entry.js';
 import type { PageFiles } from './page-files.js';
 import { type Asked, Questions } from './questions.js';
@@ -28,17 +28,32 @@ export interface ViewOptions {
   /** The machine's own. */
   readonly clock: Clock;
   readonly random: Random;
+  /** Those of the run, which go on also while nothing is read. */
+  readonly times?: () => Times | undefined;
   /** A page wishes the run to end. */
   readonly stop: () => void;
   /** The address was opened and shown again elsewhere: this is a new one. */
   readonly addressed: (address: string) => void;
   /** 0 lets the system choose. */
   readonly port?: number;
+  readonly patience?: Patience;
 }
 
 const host = '127.0.0.1';
+/** How long what comes over a socket, and who reads there, is waited for; in milliseconds. */
+export interface Patience {
+  /** Until the head of a request is there, and all of it. */
+  readonly head: number;
+  readonly request: number;
+  readonly idle: number;
+  /** How often that is looked at. */
+  readonly look: number;
+  /** Until every page has read the last of it. */
+  readonly goodbye: number;
+}
+
+const usualPatience: Patience = { head: 5_000, request: 10_000, idle: 5_000, look: 1_000, goodbye: 2_000 };
 /** In milliseconds. */
-const patience = { head: 5_000, request: 10_000, idle: 5_000, look: 1_000, goodbye: 2_000 };
 const beatEvery = 1_000;
 /** More than pages need; whatever comes beyond it is not let in. */
 const mostConnections = 256;
@@ -49,7 +64,7 @@ const mostConnections = 256;
  * @throws LiveViewError
  */
 export async function openLiveView(options: ViewOptions): Promise<LiveView> {
-  const { clock, files, random, stop } = options;
+  const { clock, files, random, stop, patience = usualPatience } = options;
   const entry = new Entry(random);
   const audience = new Audience(options.state, clock);
   const questions = new Questions((question) => {
@@ -71,7 +86,7 @@ export async function openLiveView(options: ViewOptions): Promise<LiveView> {
     },
   });
   const beat = setInterval(() => {
-    audience.beat();
+    audience.beat(options.times?.());
   }, beatEvery);
   return {
     address: addressOf(entry.token),

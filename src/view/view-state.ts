@@ -140,8 +140,10 @@ export function applied(state: ViewState, message: ViewMessage): ViewState {
     case 'point':
       return { ...state, points: bounded([...state.points, message.point]) };
     case 'caution': {
-      const others = state.cautions.filter(({ name }) => name !== message.caution.name);
-      return { ...state, cautions: [...others, message.caution] };
+      const { cautions } = state;
+      const { caution } = message;
+      const at = cautions.findIndex(({ name }) => name === caution.name);
+      return { ...state, cautions: at < 0 ? [...cautions, caution] : cautions.with(at, caution) };
     }
     case 'question':
       return { ...state, question: message.question };
@@ -158,9 +160,15 @@ export function applied(state: ViewState, message: ViewMessage): ViewState {
   }
 }
 
-/** Of more than can be told apart on a screen every other of the older half is left out; what did not hold stays. */
+/**
+ * Of more than can be told apart on a screen every other of the older half is left out; what did not hold stays, as
+ * long as that makes room.
+ */
 function bounded(points: readonly ViewedPoint[]): readonly ViewedPoint[] {
   if (points.length <= mostPoints) return points;
   const half = points.length / 2;
-  return points.filter((point, index) => index >= half || index % 2 === 0 || point.outcome === 'dropped');
+  const thinned = (stays: (point: ViewedPoint) => boolean): readonly ViewedPoint[] =>
+    points.filter((point, index) => index >= half || index % 2 === 0 || stays(point));
+  const sparse = thinned(({ outcome }) => outcome === 'dropped');
+  return sparse.length <= mostPoints ? sparse : thinned(() => false);
 }

@@ -12,7 +12,7 @@ import { openLiveView } from '../../view/server.js';
 import type { LoadedPlan } from '../load-plan.js';
 import type { PlanPerformed } from '../perform-plan.js';
 import type { RunProgress } from '../progress/run-progress.js';
-import { RunSoFar } from '../progress/run-so-far.js';
+import type { RunSoFar } from '../progress/run-so-far.js';
 import { say } from '../say.js';
 import type { StopWishes } from '../stop-signals.js';
 import type { Streams } from '../streams.js';
@@ -25,8 +25,7 @@ import { notBegun, viewedEnd } from './viewed-end.js';
 export interface RunView {
   /** The person who is asked there and at the terminal. */
   operator(terminal: TerminalOperator, yes: boolean): Operator;
-  /** @param clock that of the run. */
-  progress(clock: Clock): RunProgress;
+  progress(run: RunSoFar): RunProgress;
   ended(performed: PlanPerformed): void;
   failed(error: unknown): void;
   /** Once every page has heard the last of it, or does not listen. Never rejects. */
@@ -50,11 +49,13 @@ export async function openRunView(
   const tellAddress = (address: string): void => {
     stderr.write(`live view: ${address} (opens once; keep it to yourself)\n`);
   };
+  let counted: RunSoFar | undefined;
   const uplot = dirname(createRequire(import.meta.url).resolve('uplot'));
   const view = await openLiveView({
     state: firstState(loaded, { began: clock.wall() }),
     files: readPageFiles(built, uplot),
     clock: realClock,
+    times: () => counted && { elapsed: counted.elapsed, remaining: counted.left },
     random: randomBytes,
     stop: () => {
       stop.wish('stopped in the live view');
@@ -78,8 +79,10 @@ export async function openRunView(
           say(stderr, printableLines(text));
         },
       }),
-    progress: (clock) =>
-      viewProgress(new RunSoFar(loaded.plan, clock, loaded.resumed?.from.steps ?? 0), view),
+    progress: (run) => {
+      counted = run;
+      return viewProgress(run, view);
+    },
     ended: (performed) => {
       view.show({ kind: 'ended', ended: viewedEnd(performed) });
     },

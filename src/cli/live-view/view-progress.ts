@@ -7,21 +7,15 @@ import type { Figures, ViewedPoint } from '../../view/view-state.js';
 import type { RunProgress } from '../progress/run-progress.js';
 import type { RunSoFar } from '../progress/run-so-far.js';
 
-/** In milliseconds. */
-const tick = 1000;
 /** An instrument may say more of itself than anybody reads. */
 const longestNotice = 1000;
 
-/** Tells a live view what goes on. */
+/** Tells a live view what goes on in a run that is counted already. */
 export function viewProgress(run: RunSoFar, { show, state }: Pick<LiveView, 'show' | 'state'>): RunProgress {
   const { bench } = run.plan;
   const texts = new Map(state.cautions.map(({ name, text }) => [name, text]));
   let point: PointCollector | undefined;
   const times = () => ({ elapsed: run.elapsed, remaining: run.left });
-  // Time goes on also while nothing is read.
-  const timer = setInterval(() => {
-    show({ kind: 'beat', ...times() });
-  }, tick).unref();
 
   const recorded = (event: JournalEvent): void => {
     if (event.event === 'input') {
@@ -42,22 +36,17 @@ export function viewProgress(run: RunSoFar, { show, state }: Pick<LiveView, 'sho
 
   return {
     stepBegan(step) {
-      run.stepBegan(step);
       show({ kind: 'step', step, ...times() });
     },
-    progress(_, progress) {
-      run.seen(progress);
+    progress() {
       show({ kind: 'figures', figures: figuresOf(run.figures), ...times() });
     },
-    recorded(event) {
-      run.recorded(event);
-      recorded(event);
-    },
+    recorded,
     noticed(text) {
       show({ kind: 'notice', notice: { t: run.elapsed, text: cutText(text, longestNotice) } });
     },
     end() {
-      clearInterval(timer);
+      // What it came to is told once it is worked out.
     },
   };
 }

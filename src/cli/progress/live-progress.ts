@@ -107,16 +107,10 @@ export function liveProgress(
   process.on('SIGTSTP', suspended).on('SIGCONT', resumed);
 
   return {
-    stepBegan(step) {
-      run.stepBegan(step);
-      soon();
-    },
-    progress(_, progress) {
-      run.seen(progress);
-      soon();
-    },
-    recorded(event) {
-      if (run.recorded(event)) soon();
+    stepBegan: soon,
+    progress: soon,
+    recorded({ event }) {
+      if (event === 'step-ended') soon();
     },
     noticed(text) {
       notice = printable(text);

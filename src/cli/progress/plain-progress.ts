@@ -16,7 +16,6 @@ export class PlainProgress implements RunProgress {
   }
 
   stepBegan(step: number, kind: string, summary: string): void {
-    this.#run.stepBegan(step);
     this.#say(`${this.#place(step)}: ${kind}, ${printable(summary)}`);
   }
 
@@ -25,8 +24,9 @@ export class PlainProgress implements RunProgress {
   }
 
   recorded(event: JournalEvent): void {
-    if (!this.#run.recorded(event) || event.event !== 'step-ended') return;
-    const { took = 0, points } = this.#run.steps[event.step - 1] ?? {};
+    if (event.event !== 'step-ended') return;
+    const { state, took = 0, points } = this.#run.steps[event.step - 1] ?? {};
+    if (state !== 'done') return;
     const came = points === undefined ? '' : pointsInWords(points);
     this.#say(`${this.#place(event.step)} done in ${spokenTime(took)}${came === '' ? '' : `: ${came}`}`);
   }

@@ -1,11 +1,9 @@
-import type { Clock } from '../../clock/clock.js';
 import type { RunWatcher } from '../../run/perform.js';
-import type { Plan } from '../../run/plan.js';
 import type { Streams } from '../streams.js';
 import { PlainProgress } from './plain-progress.js';
-import { RunSoFar } from './run-so-far.js';
+import type { RunSoFar } from './run-so-far.js';
 
-/** Shows a run to whoever is at the terminal, or to a log. */
+/** Shows a run that is counted already to whoever is at the terminal, looks at a page, or reads a log. */
 export interface RunProgress extends RunWatcher {
   /** Leaves the line empty for whoever writes next, and shows nothing any more. */
   end(): void;
@@ -17,11 +15,8 @@ export interface RunProgress extends RunWatcher {
  */
 export async function runProgress(
   { stderr, environment }: Pick<Streams, 'stderr' | 'environment'>,
-  plan: Plan,
-  clock: Clock,
-  done = 0,
+  run: RunSoFar,
 ): Promise<RunProgress> {
-  const run = new RunSoFar(plan, clock, done);
   if (!canRedraw(stderr, environment)) return new PlainProgress(stderr, run);
   const { liveProgress } = await import('./live-progress.js');
   return liveProgress(stderr, environment, run);

@@ -91,17 +91,15 @@ export class RunSoFar {
     this.#figures = { ...(note === undefined ? {} : { note }), ...kept, ...progress };
   }
 
-  /** Whether the step under way ended with it. */
-  recorded(event: JournalEvent): boolean {
+  recorded(event: JournalEvent): void {
     const step = this.#steps[this.#step - 1];
-    if (step?.state !== 'now') return false;
+    if (step?.state !== 'now') return;
     if (event.event === 'point-ended' && event.outcome !== 'interrupted') {
       step.points = { ...step.points, [event.outcome]: step.points[event.outcome] + 1 };
     }
-    if (event.event !== 'step-ended') return false;
+    if (event.event !== 'step-ended') return;
     step.state = 'done';
     step.took = this.#clock.now() - this.#stepBegan;
-    return true;
   }
 }
 

@@ -1,6 +1,8 @@
 import { PassThrough } from 'node:stream';
 import { describe, expect, it } from 'vitest';
+import { counted } from '../../../src/cli/progress/counted.js';
 import { canRedraw, runProgress } from '../../../src/cli/progress/run-progress.js';
+import { RunSoFar } from '../../../src/cli/progress/run-so-far.js';
 import { VirtualClock } from '../../../src/clock/virtual-clock.js';
 import { plan, pointEnded, stepEnded } from './a-run.js';
 
@@ -8,7 +10,8 @@ async function plain(facts: { readonly isTTY?: boolean; readonly columns?: numbe
   const stream = Object.assign(new PassThrough({ encoding: 'utf8' }), facts);
   const clock = new VirtualClock(new Date(0));
   const stderr = stream as unknown as NodeJS.WriteStream;
-  const progress = await runProgress({ stderr, environment: {} }, plan, clock);
+  const run = new RunSoFar(plan, clock, 0);
+  const progress = counted(run, await runProgress({ stderr, environment: {} }, run));
   return { progress, clock, text: () => String(stream.read() ?? '') };
 }
 
