@@ -45,7 +45,14 @@ afterAll(() => browser.close());
 async function viewed(state: Partial<ViewState> = {}, inWindow = window) {
   const stop = vi.fn();
   const view = await openLiveView({
-    ...{ state: { ...before, ...state }, files, clock: realClock, random: randomBytes, stop },
+    ...{
+      state: { ...before, ...state },
+      files,
+      clock: realClock,
+      random: randomBytes,
+      stop,
+      times: () => undefined,
+    },
     addressed: () => undefined,
   });
   views.push(view);
@@ -331,7 +338,7 @@ describe('when the runner is not heard', () => {
     // Another run, which knows nothing of this page.
     const other = await openLiveView({
       ...{ state: before, files, clock: realClock, random: randomBytes, port },
-      ...{ stop: () => undefined, addressed: () => undefined },
+      ...{ stop: () => undefined, times: () => undefined, addressed: () => undefined },
     });
     views.push(other);
     await page.locator('#lost', { hasText: 'does not know this page' }).waitFor();
