@@ -8,9 +8,18 @@
 export function shiftedText(value: number, places: number, significant?: number): string {
   const [mantissa = '0', exponentText = '0'] = exponentialText(value, significant);
   const exponent = value === 0 ? 0 : Number(exponentText) + places;
+  return exponent < -7 || exponent > 20 ? `${mantissa}e${exponent}` : spelledOut(mantissa, exponent);
+}
+
+/** Every digit of a finite number and no exponent, however small or large: reading it gives the same number. */
+export function plainDecimal(value: number): string {
+  const [mantissa = '0', exponent = '0'] = exponentialText(value);
+  return spelledOut(mantissa, Number(exponent));
+}
+
+function spelledOut(mantissa: string, exponent: number): string {
   const sign = mantissa.startsWith('-') ? '-' : '';
   const digits = mantissa.replace('-', '').replace('.', '');
-  if (exponent < -7 || exponent > 20) return `${mantissa}e${exponent}`;
   if (exponent < 0) return `${sign}0.${'0'.repeat(-exponent - 1)}${digits}`;
   const whole = digits.slice(0, exponent + 1).padEnd(exponent + 1, '0');
   const rest = digits.slice(exponent + 1);

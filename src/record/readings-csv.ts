@@ -1,6 +1,7 @@
 import { writeFileSync } from 'node:fs';
-import { stringify } from 'csv-stringify/sync';
-import type { PointBegan, ReadingTaken, TimedEvent } from './journal-event.js';
+import { plainDecimal } from '../quantity/decimal-text.js';
+import { csvText, textCell } from './csv.js';
+import type { PointBegan, PointEnded, ReadingTaken, TimedEvent } from './journal-event.js';
 import { checkJournal, readJournal } from './journal-reader.js';
 import { replaceFileBy, type RunFolder } from './run-folder.js';
 
@@ -10,6 +11,7 @@ const columns = [
   'step kind',
   'point',
   'phase',
+  'point outcome',
   'sample',
   'set current (A)',
   'set voltage (V)',
@@ -32,22 +34,23 @@ const columnOf: Readonly<Record<string, (typeof columns)[number]>> = {
   'load temperature': 'temperature (°C)',
 };
 
-type Row = Partial<Record<(typeof columns)[number], string | number>>;
+type Row = Partial<Record<(typeof columns)[number], string>>;
 
 const batchSize = 500;
 
 /**
  * Writes readings.csv (RFC 4180, units in the header) from the journal: one row for each sample, which
  * is all that was read at one moment; what was read elsewhere than at the usual place stands before it, in a
- * row for each place. Empty cells were not read, or the instrument had no value.
- * Only a batch of rows is ever in memory.
+ * row for each place. Empty cells were not read, or the instrument had no value. Of a point that was interrupted
+ * the outcome says so: it was taken again, and its rows count for nothing; one that was broken off has none.
+ * Of the journal only a batch of rows, and the outcome of each point, is ever in memory.
  * @throws RecordWriteError, NoRecordError
  */
 export function writeReadingsCsv(folder: RunFolder): void {
   replaceFileBy(folder.readings, (file) => {
     let batch: Row[] = [];
     const write = (header: boolean): void => {
-      writeFileSync(file, stringify(batch, { header, columns: [...columns], record_delimiter: 'windows' }));
+      writeFileSync(file, csvText(columns, batch, { header }));
       batch = [];
     };
     write(true);
@@ -59,63 +62,82 @@ export function writeReadingsCsv(folder: RunFolder): void {
   });
 }
 
+/** A point as it stands in the table: what it was begun for, and what it came to. */
+interface PointOfTable extends PointBegan {
+  readonly kind: string;
+  readonly outcome: PointEnded['outcome'] | '';
+}
+
 function eachSample(journal: string, visit: (row: Row) => void): void {
+  const integrity = checkJournal(journal);
+  const read = (see: (event: TimedEvent) => void): void => {
+    readJournal(journal, integrity, see);
+  };
+  // What a point came to stands behind its readings.
+  const outcomes = outcomesOf(read);
   let kind = '';
-  let point: PointBegan | undefined;
+  let begun = 0;
+  let point: PointOfTable | undefined;
   let row: Row | undefined;
+  let sample: number | undefined;
   const finish = (): void => {
     if (row !== undefined) visit(row);
     row = undefined;
   };
-  readJournal(journal, checkJournal(journal), (event) => {
+  read((event) => {
     if (event.event === 'step-began') kind = event.kind;
     if (event.event === 'point-began') {
       finish();
-      point = event;
+      point = { ...event, kind, outcome: outcomes[begun] ?? '' };
+      begun += 1;
     }
     if (event.event !== 'reading' || point === undefined) return;
     if (event.at !== undefined) {
-      visit(rowElsewhere(event, kind, point));
+      visit(rowElsewhere(event, point));
       return;
     }
-    if (row?.sample !== event.sample) {
+    if (row === undefined || sample !== event.sample) {
       finish();
-      row = rowOf(event.t, kind, point, event.sample);
+      sample = event.sample;
+      row = rowOf(event.t, point, sample);
     }
     const column = columnOf[`${event.of} ${event.what}`];
-    if (column !== undefined && event.value !== null) row[column] = event.value;
+    if (column !== undefined && event.value !== null) row[column] = plainDecimal(event.value);
   });
   finish();
 }
 
+/** Of each point, in the order in which they were begun; empty where none is told. */
+function outcomesOf(read: (see: (event: TimedEvent) => void) => void): readonly PointOfTable['outcome'][] {
+  const outcomes: PointOfTable['outcome'][] = [];
+  read((event) => {
+    if (event.event === 'point-began') outcomes.push('');
+    if (event.event === 'point-ended' && outcomes.length > 0) outcomes[outcomes.length - 1] = event.outcome;
+  });
+  return outcomes;
+}
+
 /** A reading with the probes not at their usual place has a row of its own, which says where they were. */
-function rowElsewhere(reading: ReadingTaken & Pick<TimedEvent, 't'>, kind: string, point: PointBegan): Row {
+function rowElsewhere(reading: ReadingTaken & Pick<TimedEvent, 't'>, point: PointOfTable): Row {
   const { t, sample, at = '', what, value } = reading;
   const column = what === 'resistance' ? 'resistance (Ohm)' : 'voltage elsewhere (V)';
   return {
-    ...rowOf(t, kind, point, sample),
-    'probes at': asText(at),
-    ...(value === null ? {} : { [column]: value }),
+    ...rowOf(t, point, sample),
+    'probes at': textCell(at),
+    ...(value === null ? {} : { [column]: plainDecimal(value) }),
   };
 }
 
-/**
- * A text as a cell that no spreadsheet takes for a formula. Ours begin with a letter, but part of the journal
- * may have been copied from a record of somebody else's.
- */
-function asText(text: string): string {
-  return /^[=+\-@\t\r]/.test(text) ? `'${text}` : text;
-}
-
-function rowOf(t: number, kind: string, point: PointBegan, sample: number): Row {
+function rowOf(t: number, { step, kind, point, phase, outcome, set }: PointOfTable, sample: number): Row {
   return {
-    'time (s)': t,
-    step: point.step,
-    'step kind': asText(kind),
-    point: point.point,
-    phase: point.phase,
-    sample,
-    'set current (A)': point.set.current ?? '',
-    'set voltage (V)': point.set.voltage ?? '',
+    'time (s)': plainDecimal(t),
+    step: String(step),
+    'step kind': textCell(kind),
+    point: String(point),
+    phase,
+    'point outcome': outcome,
+    sample: String(sample),
+    'set current (A)': set.current === undefined ? '' : plainDecimal(set.current),
+    'set voltage (V)': set.voltage === undefined ? '' : plainDecimal(set.voltage),
   };
 }

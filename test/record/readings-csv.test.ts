@@ -22,7 +22,14 @@ function rowsOf(folder: RunFolder): Record<string, string>[] {
 
 describe('readings.csv', () => {
   it('has a row for each sample, with the units in the header and empty cells for what was not read', () => {
-    const common = { step: '1', 'step kind': 'load-ramp', point: '1', phase: 'ramp', 'set current (A)': '2' };
+    const common = {
+      step: '1',
+      'step kind': 'load-ramp',
+      point: '1',
+      phase: 'ramp',
+      'point outcome': 'held',
+      'set current (A)': '2',
+    };
     const rest = {
       'set voltage (V)': '',
       'temperature (°C)': '',
@@ -64,6 +71,45 @@ describe('readings.csv', () => {
     );
     expect(rows).toMatchObject([
       { 'step kind': "'=1+1", 'probes at': "'@SUM(A1)", 'voltage elsewhere (V)': '-0.4' },
+    ]);
+  });
+
+  it('marks what was interrupted and taken again, and tells a point that was broken off from one that ended', () => {
+    const began = (point: number): JournalEvent => ({
+      event: 'point-began',
+      step: 1,
+      point,
+      phase: 'ramp',
+      set: { current: 2 },
+    });
+    const read = (point: number, value: number): JournalEvent => ({
+      event: 'reading',
+      step: 1,
+      point,
+      sample: 1,
+      of: 'load',
+      what: 'current',
+      value,
+    });
+    const ended = (point: number, outcome: 'interrupted' | 'held'): JournalEvent => ({
+      event: 'point-ended',
+      step: 1,
+      point,
+      outcome,
+    });
+    const rows = rowsOf(
+      recordOf([
+        opened,
+        { event: 'step-began', step: 1, kind: 'load-ramp' },
+        ...[began(1), read(1, 1.5), ended(1, 'interrupted')],
+        ...[began(2), read(2, 1e-9), ended(2, 'held')],
+        ...[began(3), read(3, 2.01)],
+      ]),
+    );
+    expect(rows.map((row) => [row['point'], row['point outcome'], row['load current (A)']])).toEqual([
+      ['1', 'interrupted', '1.5'],
+      ['2', 'held', '0.000000001'],
+      ['3', '', '2.01'],
     ]);
   });
 
