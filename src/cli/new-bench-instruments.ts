@@ -10,6 +10,7 @@ import { visible } from '../instrument/visible.js';
 import { printable } from '../quantity/printable.js';
 import { readBy } from './answer-readers.js';
 import { meetInstrument, type Met } from './meet-instrument.js';
+import { troubleshootingPage } from './package-facts.js';
 import { type Option, type Questions, UnfitAnswerError } from './questions.js';
 import { shipped } from './wiring.js';
 
@@ -167,7 +168,7 @@ function sayMet(questions: Questions, met: Met): void {
       questions.say(
         'Nothing answers. Is it switched on, is remote control enabled, and, at a serial port, is the baud rate right ' +
           '(?baud=115200)? Leave it out and give its address again to ask once more; or say what it is, and pick a ' +
-          'driver by hand.',
+          `driver by hand. ${troubleshootingPage()} has more under "It does not answer".`,
       );
       return;
     case 'unreachable':

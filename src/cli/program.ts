@@ -6,7 +6,7 @@ import type { CombineOptions } from './combine.js';
 import type { CompareOptions } from './compare.js';
 import type { DriversOptions } from './drivers.js';
 import { errorText } from './error-text.js';
-import { packageFacts } from './package-facts.js';
+import { packageFacts, troubleshootingPage } from './package-facts.js';
 import type { ReportOptions } from './report.js';
 import type { RunOptions } from './run-wanted.js';
 import { say } from './say.js';
@@ -292,9 +292,12 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
 
 const firstSteps = `
 To begin:
-  railproof new bench    asks what is on the bench, or makes one up to try things on
+  railproof new bench    asks what is on the bench, or makes one up
   railproof new module   asks what the label of the module says
   railproof run quick-look --bench bench.yaml --module K1.yaml --dry-run
+
+What puzzles you at the bench, by what you see:
+  ${troubleshootingPage()}
 `;
 
 const exitStatusHelp = `

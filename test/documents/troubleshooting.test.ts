@@ -2,6 +2,7 @@ import { mkdtempSync, readdirSync, readFileSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
+import { railproof } from '../cli/in-process.js';
 import { tidyUp } from '../run/rehearsal.js';
 import { commandsIn, wrongWith } from './commands.js';
 import { printedByParts, shownOf } from './printed-by-parts.js';
@@ -66,6 +67,14 @@ describe('the page for what puzzles at the bench', () => {
     const [, contents = ''] = /^(- \*\*The bench[^]*?)^## /m.exec(page) ?? [];
     for (const heading of [...page.matchAll(/^### (.+)$/gm)].map(([, each = '']) => each))
       expect(contents).toContain(`(#${anchorOf(heading)})`);
+  });
+
+  it('is where the help says that it is, and comes with the package', async () => {
+    const { stdout } = await railproof('--help');
+    const [, named = ''] = /^ {2}(\/.*TROUBLESHOOTING\.md)$/m.exec(stdout) ?? [];
+    expect(readFileSync(named, 'utf8')).toBe(page);
+    const { files } = JSON.parse(readFileSync('package.json', 'utf8')) as { files: readonly string[] };
+    expect(files).toContain('TROUBLESHOOTING.md');
   });
 
   it('names no command or option that there is not', async () => {
