@@ -51,7 +51,6 @@ async function viewed(state: Partial<ViewState> = {}, inWindow = window) {
       clock: realClock,
       random: randomBytes,
       stop,
-      times: () => undefined,
     },
     addressed: () => undefined,
   });
@@ -338,7 +337,7 @@ describe('when the runner is not heard', () => {
     // Another run, which knows nothing of this page.
     const other = await openLiveView({
       ...{ state: before, files, clock: realClock, random: randomBytes, port },
-      ...{ stop: () => undefined, times: () => undefined, addressed: () => undefined },
+      ...{ stop: () => undefined, addressed: () => undefined },
     });
     views.push(other);
     await page.locator('#lost', { hasText: 'does not know this page' }).waitFor();
