@@ -140,6 +140,8 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
       'what must have changed and what must not: a shipped tolerance by its name, or a file',
       'unchanged',
     )
+    .option('--page <file>', 'keep a page with the curves of both laid over each other: comparison.html')
+    .option('--open', 'show the page with what this system opens pages with')
     .addOption(junit())
     .addOption(json())
     .action(async (earlier: string, later: string, options: CompareOptions) => {
@@ -272,17 +274,23 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     });
 
   command('runs [folder]', 'the records here', 'railproof runs fixtures/runs')
+    .addOption(
+      new Option(
+        '--csv',
+        'print the findings of all records for a spreadsheet, a row each, worked out again: > findings.csv',
+      ).conflicts('json'),
+    )
     .addOption(json())
-    .action(async (folder: string | undefined, options: { json?: boolean }) => {
+    .action(async (folder: string | undefined, options: { json?: boolean; csv?: boolean }) => {
       const { runs } = await import('./runs.js');
-      done(runs({ folder: folder ?? 'runs', ...options }, streams));
+      done(await runs({ folder: folder ?? 'runs', ...options }, streams));
     });
 
   command(
-    'schema <kind>',
-    'the JSON Schema of a kind of file (module, bench, driver, procedure, tolerance, stages), for editors',
-    'railproof schema procedure > procedure.schema.json',
-  ).action(async (kind: string) => {
+    'schema [kind]',
+    'a JSON Schema: of a kind of file, by which an editor completes and checks it, or of what --json prints; without a kind, all there are',
+    'railproof schema bench > bench.schema.json',
+  ).action(async (kind: string | undefined) => {
     const { schema } = await import('./schema.js');
     done(schema(kind, streams));
   });

@@ -13,11 +13,16 @@ import type { RunsJson } from './schema/runs-schema.js';
 import type { Streams } from './streams.js';
 
 /** `railproof runs`: the records of a folder, oldest first, a line each. */
-export function runs(
-  wanted: { readonly folder: string; readonly json?: boolean },
+export async function runs(
+  wanted: { readonly folder: string; readonly json?: boolean; readonly csv?: boolean },
   streams: Streams,
-): ExitCode {
+): Promise<ExitCode> {
   const names = recordNames(wanted.folder);
+  if (wanted.csv === true) {
+    const { runsAsCsv } = await import('./runs-csv.js');
+    streams.stdout.write(runsAsCsv(wanted.folder, names));
+    return exitCodes.conforms;
+  }
   const rows: string[][] = [];
   const listed: RunsJson['runs'][number][] = [];
   for (const name of names) {
