@@ -32,6 +32,19 @@ describe('the answer', () => {
     ]);
   });
 
+  it('tells nobody to load what a damaged record shows, though its run came to its end', () => {
+    const damaged = {
+      ...resultOf(),
+      findings: [recommended(4), usable],
+      decisions: [],
+      outcome: 'undecided',
+      integrity: { kind: 'damaged', lines: 9, bytes: 99, line: 10, problem: 'there is more after the end' },
+    } as const;
+    expect(answer(damaged)[0]).toBe(
+      'As far as the record can be believed, it could be loaded continuously with up to 4.00 A.',
+    );
+  });
+
   it('keeps quiet about a limit that was not met, and about a style that could not be told', () => {
     expect(answerTo(recommended(4), usable)).toHaveLength(2);
     expect(

@@ -100,11 +100,11 @@ section{margin-top:2.6rem}
 .facts{display:grid;grid-template-columns:max-content 1fr;gap:.3rem 1.2rem;margin:1.1rem 0 0}
 .facts dt{color:var(--soft);font-size:.9rem;line-height:1.7}
 .facts dd{margin:0;min-width:0}
-.figures{display:grid;grid-template-columns:repeat(auto-fit,minmax(9.5rem,1fr));gap:.9rem 1.6rem;margin:1.1rem 0 .3rem}
+.figures{display:grid;grid-template-columns:repeat(auto-fit,minmax(9.5rem,1fr));gap:.9rem 1.4rem;margin:1.1rem 0 .3rem}
 .figures div{border-top:1.5px solid var(--ink);padding-top:.35rem}
 .figures dt{color:var(--soft);font-size:.88rem;line-height:1.35}
 .figures dd{margin:0;font-size:.88rem;line-height:1.35}
-.figures .big{font:600 1.45rem/1.3 Charter,"Bitstream Charter","Sitka Text",Cambria,"Noto Serif","Liberation Serif",serif;
+.figures .big{font:600 1.25rem/1.3 Charter,"Bitstream Charter","Sitka Text",Cambria,"Noto Serif","Liberation Serif",serif;
  font-variant-numeric:tabular-nums}
 .code{font:.86em/1.5 ui-monospace,"Noto Sans Mono","Liberation Mono",monospace;overflow-wrap:anywhere}
 .one{break-inside:avoid;margin-top:1.7rem}
@@ -186,9 +186,9 @@ h1{font-size:1.6rem}
 }
 @page{size:A4;margin:16mm 15mm 18mm}
 @media print{
-.sign dd{height:1.1cm}
 :root{color-scheme:light;${variables(light)};--paper:#fff}
 html{font-size:9.5pt}
+.sign dd{height:1.1cm}
 body{line-height:1.4}
 p,ul,ol,figcaption{max-width:none}
 header,main,footer{max-width:none;padding-inline:0}
