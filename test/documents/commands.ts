@@ -3,16 +3,19 @@ import { railproof } from '../cli/in-process.js';
 /** A command as a document shows it, without what the shell makes of it. */
 export type Named = readonly string[];
 
+/** The lines of each block that a reader pastes into a shell: those without a language, and those for one. */
+export function blocksIn(markdown: string): readonly (readonly string[])[] {
+  return [...markdown.matchAll(fenced)].flatMap(([, language = '', block = '']) =>
+    language === '' || language === 'sh' ? [block.split('\n').map((line) => line.trim())] : [],
+  );
+}
+
+const fenced = /^[ ]*```(\w*)\n([^]*?)^[ ]*```$/gm;
+
 /** The commands that a document names, in blocks and in the middle of a sentence. */
 export function commandsIn(markdown: string): readonly Named[] {
-  const joined = markdown.replace(/\\\n\s*/g, ' ');
-  const blocks = [...joined.matchAll(/^[ ]*```(?:sh|)\n([^]*?)^[ ]*```$/gm)].flatMap(([, block = '']) =>
-    block.split('\n').map((line) => line.trim()),
-  );
-  const spans = [...joined.replace(/^[ ]*```[^]*?^[ ]*```$/gm, '').matchAll(/`([^`\n]+)`/g)].map(
-    ([, span = '']) => span,
-  );
-  return [...blocks, ...spans]
+  const spans = [...markdown.replace(fenced, '').matchAll(/`([^`\n]+)`/g)].map(([, span = '']) => span);
+  return [...blocksIn(markdown).flat(), ...spans]
     .flatMap((line) => line.split(/ && | \| /))
     .flatMap((line) => {
       const words = wordsOf(line.replace(/^node dist\/cli\/main\.js/, 'railproof').replace(/ > .*$/, ''));
@@ -21,7 +24,7 @@ export function commandsIn(markdown: string): readonly Named[] {
 }
 
 /** As a shell would cut it, as far as documents go. */
-export function wordsOf(line: string): readonly string[] {
+function wordsOf(line: string): readonly string[] {
   return [...line.matchAll(/"([^"]*)"|'([^']*)'|(\S+)/g)].map(
     ([, one, two, three]) => one ?? two ?? three ?? '',
   );
