@@ -9,7 +9,13 @@ export function csvText<Column extends string>(
   rows: readonly Partial<Readonly<Record<Column, string>>>[],
   { header = true } = {},
 ): string {
-  return stringify([...rows], { header, columns: [...columns], record_delimiter: 'windows' });
+  return stringify([...rows], {
+    header,
+    columns: [...columns],
+    record_delimiter: 'windows',
+    // Half of an end of a line is one to some readers; of itself the library quotes the whole one alone.
+    quoted_match: /[\r\n]/,
+  });
 }
 
 /**

@@ -121,7 +121,11 @@ function text(words: string): string {
   return textCell(printable(words));
 }
 
+/** Far more than any instrument gives, and without what adding in binary leaves behind; the JSON holds every digit. */
+const significant = 10;
+
 function number(value: number | null | undefined, dimension: Dimension | null): string {
   if (value === null || value === undefined || !Number.isFinite(value)) return '';
-  return plainDecimal(dimension === null ? value : toJsonUnit(value, dimension));
+  const inUnit = dimension === null ? value : toJsonUnit(value, dimension);
+  return plainDecimal(Number(inUnit.toPrecision(significant)));
 }
