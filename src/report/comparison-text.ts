@@ -1,12 +1,13 @@
 import { allowedInWords, changeInWords, valueInWords } from '../judgement/change-in-words.js';
 import type { Compared } from '../judgement/compare.js';
-import type { Verdict } from '../judgement/verdict.js';
 import { alignTable } from './align.js';
 import { changesInWords } from './changes.js';
-import { type ComparedRecords, outcomeOf } from './comparison.js';
+import { comparisonWarnings } from './comparison-warnings.js';
+import { type ComparedRecords, outcomeOf, verdictWords } from './comparison.js';
 import { printable, printableData } from './printable.js';
-import { endedHow, type Result } from './result.js';
+import type { Result } from './result.js';
 import type { Style } from './style.js';
+import { warningInWords } from './warnings.js';
 
 /**
  * What changed between two records, for a terminal of so many columns or for a text file, where each row is a line: the
@@ -15,7 +16,7 @@ import type { Style } from './style.js';
 export function comparisonAsText(records: ComparedRecords, style: Style, columns?: number): string {
   return [
     heading(records, style),
-    ...warnings(records).map((line) => style.warn(line)),
+    ...comparisonWarnings(records).map((warning) => style.warn(printable(warningInWords(warning)))),
     answer(records, style),
     table(records, style, columns),
     absent(records),
@@ -42,29 +43,6 @@ function modulesOf({ header }: Result): string {
   return printable(header.modules.map(({ name }) => name).join(', '));
 }
 
-function warnings({ before, after, comparison }: ComparedRecords): readonly string[] {
-  const different = comparison.sameModules
-    ? []
-    : [
-        `DIFFERENT MODULES: the earlier record is of ${modulesOf(before)}, the later one of ${modulesOf(after)}.`,
-      ];
-  return [...different, ...[before, after].flatMap(endOf)];
-}
-
-function endOf(result: Result): readonly string[] {
-  const { integrity } = result;
-  const run = printable(result.run);
-  const { how, reason } = endedHow(result);
-  if (integrity.kind === 'damaged')
-    return [
-      `DAMAGED RECORD: ${run}, line ${integrity.line} of its journal: ${printable(integrity.problem)}.`,
-    ];
-  if (how === 'cut-off') return [`CUT OFF: ${run} ends without an end; only what is whole is compared.`];
-  return how === 'completed'
-    ? []
-    : [`${how.toUpperCase()}: ${run}: ${printable(reason ?? 'no reason is given')}`];
-}
-
 const outcomes = {
   conforms: 'As it should be.',
   'does-not-conform': 'NOT AS IT SHOULD BE.',
@@ -75,16 +53,6 @@ function answer(records: ComparedRecords, style: Style): string {
   const sentences = changesInWords(printableData(records.comparison));
   return [style.strong(outcomes[outcomeOf(records)]), ...sentences].join('\n');
 }
-
-const verdicts: Readonly<Record<Verdict, string>> = {
-  'unchanged-within-tolerance': 'unchanged within tolerance',
-  unchanged: 'unchanged',
-  changed: 'changed',
-  'cannot-tell': 'cannot tell',
-  'only-before': 'only before',
-  'only-after': 'only after',
-  'not-compared': 'not compared',
-};
 
 function table({ comparison }: ComparedRecords, style: Style, columns?: number): string {
   const { findings } = printableData(comparison);
@@ -121,7 +89,7 @@ function narrowTable(findings: readonly Compared[]): readonly string[] {
 function cellsOf(compared: Compared): readonly string[] {
   const { finding, before, after, difference, expected, verdict, outcome, note } = compared;
   const normalizedError = difference?.normalizedError ?? null;
-  const word = verdicts[verdict];
+  const word = verdictWords[verdict];
   return [
     finding,
     before === undefined ? '' : valueInWords(before),

@@ -1,5 +1,6 @@
 import type { Comparison } from '../judgement/compare.js';
 import type { Outcome } from '../judgement/decision.js';
+import type { Verdict } from '../judgement/verdict.js';
 import type { Result } from './result.js';
 
 /** Two records understood and compared: everything that a report of it can say. */
@@ -15,3 +16,14 @@ export function outcomeOf({ before, after, comparison }: ComparedRecords): Outco
   const whole = before.integrity.kind === 'whole' && after.integrity.kind === 'whole';
   return comparison.outcome === 'conforms' && !whole ? 'undecided' : comparison.outcome;
 }
+
+/** What became of a finding, by the tolerance. */
+export const verdictWords: Readonly<Record<Verdict, string>> = {
+  'unchanged-within-tolerance': 'unchanged within tolerance',
+  unchanged: 'unchanged',
+  changed: 'changed',
+  'cannot-tell': 'cannot tell',
+  'only-before': 'only before',
+  'only-after': 'only after',
+  'not-compared': 'not compared',
+};

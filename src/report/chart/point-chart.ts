@@ -2,11 +2,13 @@ import type { Dimension } from '../../quantity/quantity.js';
 import { element, type Markup, short } from '../page/markup.js';
 import { type AxisWish, domainOf, extremesOf } from './axis.js';
 import { type ChartLine, drawnBand, drawnLine, lookClass, looked, type LookedLine } from './drawn-line.js';
-import { endNames, roomForNames } from './end-names.js';
+import { endNames, endOf, roomForNames } from './end-names.js';
 import { chartWidth, type ChartWords, clipped, type Frame, framed, frameOf } from './frame.js';
 import { markBands, roomForMarks, type VerticalMark, verticalMarks } from './marks.js';
+import { namesAtEnds } from './names-at-ends.js';
 import { drawnKey, drawnShape, type KeyEntry, roomForKey, type Shape } from './shapes.js';
 import { thinned } from './thinned.js';
+import { roomForTurns, turnLines, type TurnRow, turnRows } from './turn-rows.js';
 
 /** Measured points, with what was laid through them, levels and places worth knowing, and a key of the shapes. */
 export interface PointChart extends ChartWords {
@@ -17,6 +19,10 @@ export interface PointChart extends ChartWords {
   readonly levels?: readonly Level[];
   readonly marks?: readonly VerticalMark[];
   readonly whiskers?: readonly Whisker[];
+  /** Below the plot. */
+  readonly turns?: readonly TurnRow[];
+  /** Where the names of the lines stand: in the key where left out, within the plot, or at its right. */
+  readonly names?: 'key' | 'at-ends' | 'beside';
   /** Of the plot, and what is left and right of it at least, where charts stand one below the other. */
   readonly size?: { readonly height: number; readonly left: number; readonly right: number };
 }
@@ -43,8 +49,10 @@ export interface PointSort {
 export interface ChartPoint {
   readonly x: number;
   readonly y: number;
-  /** When pointed at; made for those only that are drawn. */
+  /** When pointed at; made for those only that are drawn, as all that follows. */
   readonly says: () => string;
+  /** What it lies between with 95 %. */
+  readonly between?: () => readonly [low: number, high: number];
 }
 
 /** A horizontal line over the whole width, its name at the right. */
@@ -66,15 +74,16 @@ export interface Whisker {
 const mostPoints = 300;
 
 export function pointChart(chart: PointChart): Markup {
-  const { marks = [], levels = [], whiskers = [] } = chart;
+  const { marks = [], levels = [], whiskers = [], turns = [], names = 'key' } = chart;
   const lines = looked(chart.lines ?? []);
   const sorts = drawnOf(chart.sorts);
-  const key = [...sorts.map(keyEntry), ...lines.map(lineEntry)];
+  const key = [...sorts.map(keyEntry), ...(names === 'key' ? lines.map(lineEntry) : [])];
+  const beside = names === 'beside' ? lines : [];
   const { right = 0, ...size } = chart.size ?? {};
   const frame = frameOf(axesOf({ ...chart, sorts }), {
     above: (x, width) => roomForMarks(marks, x, width),
-    right: Math.max(right, roomForNames(levels.map(({ name }) => name))),
-    below: roomForKey(key, chartWidth),
+    right: Math.max(right, roomForNames([...levels, ...beside].map(({ name }) => name))),
+    below: roomForTurns(turns) + roomForKey(key, chartWidth),
     ...size,
   });
   const isBehind = ({ shape }: PointSort): boolean => shape === 'dot';
@@ -82,6 +91,7 @@ export function pointChart(chart: PointChart): Markup {
     chart,
     frame,
     markBands(marks, frame),
+    turnLines(turns, frame),
     clipped(
       chart,
       lines.map((line) => drawnBand(line, frame)),
@@ -94,13 +104,19 @@ export function pointChart(chart: PointChart): Markup {
       chart,
       sorts.map((sort) => joining(sort, frame)),
       lines.map((line) => drawnLine(line, frame)),
+      sorts.map((sort) => drawnReaches(sort, frame)),
     ),
     whiskers.map((whisker) => drawnWhisker(whisker, frame)),
     sorts.filter((sort) => !isBehind(sort)).map((sort) => drawnSort(sort, frame)),
+    names === 'at-ends' && namesAtEnds(lines, frame),
     endNames(
-      levels.map(({ at, name }) => ({ name, x: frame.x.end, y: frame.y.at(at), class: 'level' })),
+      [
+        ...levels.map(({ at, name }) => ({ name, x: frame.x.end, y: frame.y.at(at), class: 'level' })),
+        ...beside.map((line) => endOf(line, frame)),
+      ],
       frame,
     ),
+    turnRows(turns, frame.height - roomForKey(key, chartWidth) - roomForTurns(turns), frame),
     drawnKey(key, frame),
   );
 }
@@ -148,7 +164,7 @@ function axesOf({ x, y, sorts, lines = [], levels = [], whiskers = [] }: PointCh
   const to = Math.max(x.to ?? across.to, from);
   const up = domainOf(
     [
-      ...points.map((point) => point.y),
+      ...points.flatMap(({ y: value, between }) => [value, ...(between?.() ?? [])]),
       ...lines.flatMap(({ ys, band }) => [...ys, ...(band?.low ?? []), ...(band?.high ?? [])]),
       ...levels.map(({ at }) => at),
       ...whiskers.flatMap(({ low, high }) => [low, high]),
@@ -182,6 +198,17 @@ function drawnSort({ shape, look, points }: PointSort, frame: Frame): Markup {
     { class: lookClass(look) },
     points.map((point) => drawnShape(shape, placeOf(point, frame), point.says())),
   );
+}
+
+/** Of all points of a sort in one path; a point says itself what it lies between. */
+function drawnReaches({ look, points }: PointSort, { x, y }: Frame): Markup | undefined {
+  const reaches = points.flatMap(({ x: at, between }) => {
+    const [low, high] = between?.() ?? [];
+    if (low === undefined || high === undefined) return [];
+    return [`M${short(x.at(at) - 3)} ${short(y.at(high))}h6m-3 0V${short(y.at(low))}m-3 0h6`];
+  });
+  if (reaches.length === 0) return undefined;
+  return element('g', { class: lookClass(look) }, element('path', { class: 'reach', d: reaches.join('') }));
 }
 
 function placeOf({ x, y }: ChartPoint, frame: Frame): readonly [number, number] {

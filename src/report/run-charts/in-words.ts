@@ -1,5 +1,5 @@
 import type { StepEvidence } from '../../analysis/evidence.js';
-import type { Finding } from '../../analysis/finding.js';
+import type { Comparable } from '../../judgement/difference.js';
 import { formatInterval, formatQuantity } from '../../quantity/format-quantity.js';
 import type { Amperes, Dimension, Volts } from '../../quantity/quantity.js';
 
@@ -13,7 +13,12 @@ export function volts(value: Volts): string {
 }
 
 /** A finding's value with its interval: `5.30 A, 95 % from 5.28 to 5.32 A`; at least, where it is a bound. */
-export function foundInWords({ value, interval, dimension, bound }: Finding): string {
+export function foundInWords({
+  value,
+  interval,
+  dimension,
+  bound,
+}: Pick<Comparable, 'value' | 'interval' | 'dimension' | 'bound'>): string {
   if (typeof value !== 'number' || dimension === null) return String(value);
   const least = bound === 'least' ? 'at least ' : '';
   if (interval === null) return `${least}${formatQuantity(value, dimension, { significant: 4 })}`;

@@ -1,0 +1,37 @@
+import type { Compared } from './compare.js';
+import type { Comparable, Difference } from './difference.js';
+
+/**
+ * Whether a finding is other than it was, whatever may be:
+ * - `moved`: by more than both uncertainties together leave open, or from one word to another;
+ * - `as-it-was`: not by more than that;
+ * - `as-it-stands`: no uncertainty is known of it, so nobody can say by how much chance alone moves it;
+ * - `not-told`: only one record has it, it could not be told, or it is a least value that may be more.
+ */
+export type Movement = 'moved' | 'as-it-was' | 'as-it-stands' | 'not-told';
+
+/** Quantities by E_n: beyond 1 either way it moved (ISO/IEC 17043). What was judged `changed` moved for certain. */
+export function movementOf({ before, after, difference, verdict }: Compared): Movement {
+  if (verdict === 'changed') return 'moved';
+  if (before === undefined || after === undefined) return 'not-told';
+  if (difference === undefined) return movementOfWords(before, after);
+  if (before.bound !== undefined || after.bound !== undefined)
+    return movementOfBounds(before, after, difference);
+  const { expanded, normalizedError, value } = difference;
+  if (normalizedError === null) return value === 0 ? 'as-it-was' : 'as-it-stands';
+  if (!Number.isFinite(expanded)) return 'not-told';
+  return Math.abs(normalizedError) > 1 ? 'moved' : 'as-it-was';
+}
+
+function movementOfWords(before: Comparable, after: Comparable): Movement {
+  const areWords = typeof before.value === 'string' && typeof after.value === 'string';
+  if (!areWords || before.value === 'undetermined' || after.value === 'undetermined') return 'not-told';
+  return before.value === after.value ? 'as-it-was' : 'moved';
+}
+
+/** Of a least value only that can be told which lies on the other side of it. */
+function movementOfBounds(before: Comparable, after: Comparable, { value, expanded }: Difference): Movement {
+  if (before.bound !== undefined && after.bound !== undefined) return 'not-told';
+  const away = before.bound === undefined ? value : -value;
+  return away > (expanded ?? 0) ? 'moved' : 'not-told';
+}

@@ -1,0 +1,31 @@
+import type { ComparedRecords } from './comparison.js';
+import { endedHow, type Result } from './result.js';
+import type { Warning } from './warnings.js';
+
+/** What must be known before two records are believed side by side: whose they are, and whether they are whole. */
+export function comparisonWarnings({ before, after, comparison }: ComparedRecords): readonly Warning[] {
+  const text = `the earlier record is of ${namesOf(before)}, the later one of ${namesOf(after)}.`;
+  const different = comparison.sameModules ? [] : [{ word: 'DIFFERENT MODULES', text }];
+  return [...different, ...[before, after].flatMap(endOf)];
+}
+
+function namesOf({ header }: Result): string {
+  return header.modules.map(({ name }) => name).join(', ');
+}
+
+function endOf(result: Result): readonly Warning[] {
+  const { integrity, run } = result;
+  const { how, reason } = endedHow(result);
+  if (integrity.kind === 'damaged')
+    return [
+      {
+        word: 'DAMAGED RECORD',
+        text: `${run}, line ${integrity.line} of its journal: ${integrity.problem}.`,
+      },
+    ];
+  if (how === 'cut-off')
+    return [{ word: 'CUT OFF', text: `${run} ends without an end; only what is whole is compared.` }];
+  return how === 'completed'
+    ? []
+    : [{ word: how.toUpperCase(), text: `${run}: ${reason ?? 'no reason is given'}` }];
+}
