@@ -49,9 +49,8 @@ export class EventPage {
   }
 
   beat(event: string): void {
-    const blocked = this.#blockedSince === undefined ? 0 : this.#clock.now() - this.#blockedSince;
-    if (blocked > patience) this.#response.destroy();
-    else if (blocked === 0) this.tell(event);
+    if (this.#blockedSince === undefined) this.tell(event);
+    else if (this.#clock.now() - this.#blockedSince > patience) this.#response.destroy();
   }
 
   /** Settled once all of it is on its way, or nobody is there to read it. */
