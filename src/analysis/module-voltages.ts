@@ -80,16 +80,21 @@ export function sumUpTo({ modules, current }: StackLook, place: number): Volts {
 }
 
 /**
- * The budget of Σ (V − I·R) over the places up to one, less the output where that is wanted. What one meter
- * does to several places is added up before it is squared: its gain scales the whole sum, its offset counts
- * once for each place, and both come off again with the output where it is read by the same meter.
+ * The budget of Σ (V − I·R) over the places up to one, from the lowest unless another is named, less the output
+ * where that is wanted. What one meter does to several places is added up before it is squared: its gain scales
+ * the whole sum, its offset counts once for each place, and both come off again with the output where it is read by
+ * the same meter.
  */
 export function sumBudget(
   header: RunHeader,
   look: StackLook,
-  { upTo, lessOutput }: { readonly upTo: number; readonly lessOutput: boolean },
+  {
+    from = 1,
+    upTo,
+    lessOutput,
+  }: { readonly from?: number; readonly upTo: number; readonly lessOutput: boolean },
 ): readonly Contribution[] {
-  const summed = look.modules.filter(({ place }) => place <= upTo);
+  const summed = look.modules.filter(({ place }) => place >= from && place <= upTo);
   const reads = [
     ...summed.map(({ place, volts }) => ({ by: meterOf(header, place), volts, sign: 1 })),
     ...(lessOutput ? [outputRead(header, look)] : []),
@@ -120,7 +125,9 @@ export function sumBudget(
     ...(lessOutput && look.outputBy === 'load'
       ? [promised('resistance of the leads', rectangular(leads) * look.current)]
       : []),
-    ...(look.drift === 0 ? [] : [promised('drift between the passes', look.drift * Math.sqrt(upTo))]),
+    ...(look.drift === 0
+      ? []
+      : [promised('drift between the passes', look.drift * Math.sqrt(upTo - from + 1))]),
   ];
 }
 

@@ -17,6 +17,16 @@ export interface StackSeen {
   readonly climb: readonly StackLook[];
   /** Whose voltage goes first; undefined where none was seen to. */
   readonly collapse: Collapse | undefined;
+  /** Which of them were driven below zero by the others, at the lowest that each of them was seen. */
+  readonly reversed: readonly Reversed[];
+}
+
+/** A module through which the others push a current against its polarity. */
+export interface Reversed {
+  readonly module: string;
+  readonly volts: Volts;
+  /** What was asked for then. */
+  readonly at: Amperes;
 }
 
 /** Undefined where the circuit is no string. */
@@ -24,14 +34,28 @@ export function stackSeen(evidence: Evidence): StackSeen | undefined {
   const { header } = evidence;
   if (header.circuit !== 'series') return undefined;
   const looks = stackLooks(evidence);
+  const climb = looks
+    .filter(({ kind }) => kind === 'together' || kind === 'climb')
+    .sort((one, other) => askedOf(one) - askedOf(other));
   return {
     looks,
     wrong: worstSum(header, looks),
-    climb: looks
-      .filter(({ kind }) => kind === 'together' || kind === 'climb')
-      .sort((one, other) => askedOf(one) - askedOf(other)),
+    climb,
     collapse: firstCollapse(header, looks),
+    reversed: reversedIn(header, climb),
   };
+}
+
+/** Below zero by more than it may be off by; what is nothing reads a little below zero as well. */
+function reversedIn(header: RunHeader, climb: readonly StackLook[]): readonly Reversed[] {
+  return header.modules.flatMap(({ name }) => {
+    const below = climb
+      .flatMap((look) => voltagesThere(header, look).map((each) => ({ ...each, at: askedOf(look) })))
+      .filter(({ module, volts, expanded }) => module === name && volts + expanded < 0)
+      .sort((one, other) => one.volts - other.volts);
+    const [lowest] = below;
+    return lowest === undefined ? [] : [{ module: name, volts: lowest.volts, at: lowest.at }];
+  });
 }
 
 /** What flowed; what was asked for where the string dropped out, as nothing of it flowed then. */
@@ -65,5 +89,18 @@ export function heightsThere(
     module,
     top: sumUpTo(look, place),
     expanded: combine(sumBudget(header, look, { upTo: place, lessOutput: false })).expanded,
+  }));
+}
+
+/** What each module gives at its own output at a look, before whatever is in series with it, with its 95 %. */
+export function voltagesThere(
+  header: RunHeader,
+  look: StackLook,
+): readonly { readonly module: string; readonly volts: Volts; readonly expanded: Volts }[] {
+  const unloaded = { ...look, current: 0 };
+  return look.modules.map(({ module, place, volts }) => ({
+    module,
+    volts,
+    expanded: combine(sumBudget(header, unloaded, { from: place, upTo: place, lessOutput: false })).expanded,
   }));
 }

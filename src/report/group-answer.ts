@@ -15,11 +15,11 @@ export function groupAnswer({ header, findings }: Result): readonly string[] {
       return [
         ...held(findings, 'The group'),
         ...ballasts(findings),
-        ...hogging(findings),
+        ...hoggingInWords(findings),
         ...wanted(findings),
       ];
     case 'series':
-      return [...held(findings, 'The string'), ...standing(header, findings), ...weakest(findings)];
+      return [...held(findings, 'The string'), ...standing(header, findings), ...weakestInWords(findings)];
   }
 }
 
@@ -44,7 +44,8 @@ function ballasts(findings: readonly Finding[]): readonly string[] {
     );
 }
 
-function hogging(findings: readonly Finding[]): readonly string[] {
+/** Whether one of them takes more than its part, and why. */
+export function hoggingInWords(findings: readonly Finding[]): readonly string[] {
   const finding = findingNamed(findings, 'hogging-module');
   if (finding === undefined) return [];
   switch (finding.value) {
@@ -97,7 +98,8 @@ function unknownIsolation(modules: Result['header']['modules']): readonly string
   ];
 }
 
-function weakest(findings: readonly Finding[]): readonly string[] {
+/** Which of a string gives way first. */
+export function weakestInWords(findings: readonly Finding[]): readonly string[] {
   const finding = findingNamed(findings, 'weakest-module');
   if (finding === undefined) return [];
   if (finding.value === 'none') return [sentence('None of them gives way first', finding.note)];

@@ -1,110 +1,190 @@
-import { findingNamed } from '../../analysis/finding.js';
-import { askedOf, type StackSeen, stackSeen, touchable } from '../../analysis/stack-seen.js';
-import { sumUpTo } from '../../analysis/module-voltages.js';
+import type { StackLook } from '../../analysis/module-voltages.js';
+import { isComplete } from '../../analysis/place-looks.js';
+import {
+  askedOf,
+  heightsThere,
+  type StackSeen,
+  stackSeen,
+  touchable,
+  voltagesThere,
+} from '../../analysis/stack-seen.js';
+import { formatQuantity } from '../../quantity/format-quantity.js';
+import type { Volts } from '../../quantity/quantity.js';
 import type { RunHeader } from '../../record/run-header.js';
 import { extremesOf } from '../chart/axis.js';
 import type { VerticalMark } from '../chart/marks.js';
-import { type Level, pointChart, type PointSort } from '../chart/point-chart.js';
+import { type ChartPoint, pointChart, type PointSort } from '../chart/point-chart.js';
+import { weakestInWords } from '../group-answer.js';
 import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
 import { figure } from '../sheet/figure.js';
 import { amps, stepInWords, volts } from './in-words.js';
-import { memberLook } from './member-look.js';
+import { lineThrough, memberLook } from './member-look.js';
 
 const title = 'Voltages in the string';
+/** From so much of what may be touched on it is shown. */
+const comesNear = 0.7;
+/** Of the highest: what reads a little below zero does not stretch the axis. */
+const noticeable = 0.01;
+const sumLook = 5;
+const droppedLook = 4;
 
-/** The voltage of each member of a string, and their sum, over its current. Undefined where nothing was stacked. */
+/** What is drawn of a member, or of all of them together. */
+interface Series {
+  readonly name: string;
+  readonly sort: Pick<PointSort, 'shape' | 'look'>;
+  readonly held: readonly ChartPoint[];
+  readonly dropped: readonly ChartPoint[];
+}
+
+/**
+ * The voltage of each member of a string over its current, and their sum; whose goes first, and who is driven below
+ * zero. Undefined where nothing was stacked.
+ */
 export function stackFigure(result: Result): Markup | undefined {
   const { evidence, header } = result;
   const seen = stackSeen(evidence);
-  if (seen === undefined || seen.climb.length === 0) return undefined;
-  const sorts = sortsOf(header, seen);
-  const points = sorts.flatMap((sort) => sort.points);
+  if (seen === undefined) return undefined;
+  const series = [
+    ...header.modules.map(({ name }, place) => member(header, seen, name, place)),
+    sum(header, seen),
+  ];
+  const points = series.flatMap(({ held, dropped }) => [...held, ...dropped]);
   if (points.length === 0) return undefined;
   const [, most] = extremesOf(points.map(({ x }) => x));
   const [lowest, highest] = extremesOf(points.map(({ y }) => y));
+  const goesBelow = lowest < -noticeable * highest;
   return figure(
     title,
     pointChart({
       id: 'stack',
       title,
-      description: inWords(seen),
+      description: inWords(result, seen),
       x: { label: 'Current of the string', dimension: 'current', from: 0, to: Math.max(most * 1.03, 0.1) },
-      y: { label: 'Voltage', dimension: 'voltage', ...(lowest >= 0 ? { from: 0 } : {}) },
-      sorts,
-      levels: levelsOf(highest),
+      y: { label: 'Voltage', dimension: 'voltage', ...(goesBelow ? {} : { from: 0, to: highest * 1.06 }) },
+      sorts: sortsOf(series),
+      lines: series.map(({ name, sort, held, dropped }) =>
+        lineThrough(name, rising([...held, ...dropped]), sort.look),
+      ),
+      levels: [
+        ...(goesBelow ? [{ at: 0, name: '0 V' }] : []),
+        ...(highest < comesNear * touchable ? [] : [{ at: touchable, name: `${touchable} V, touchable` }]),
+      ],
       marks: marksOf(seen),
+      names: 'beside',
     }),
-    caption(result),
+    caption(result, seen),
   );
 }
 
-function sortsOf(header: RunHeader, { climb }: StackSeen): readonly PointSort[] {
-  const places = header.modules.length;
-  const members = header.modules.map(({ name }, place): PointSort => ({
-    name,
-    ...memberLook(place),
-    joined: true,
-    points: climb.flatMap((look) =>
-      look.modules
-        .filter(({ module }) => module === name)
-        .map((each) => ({
-          x: askedOf(look),
-          y: each.volts,
-          says: () =>
-            `${name} ${volts(each.volts)} at ${amps(askedOf(look))}, ${look.outcome}; ` +
-            stepInWords({ step: look.step, kind: 'stack-check' }),
-        })),
-    ),
-  }));
-  const sum: PointSort = {
-    name: 'sum of them',
-    shape: 'dot',
-    look: 5,
-    joined: true,
-    points: climb
-      .filter(({ modules }) => modules.length === places)
-      .map((look) => {
-        const all = sumUpTo(look, places);
-        return {
-          x: askedOf(look),
-          y: all,
-          says: () =>
-            `together ${volts(all)} at ${amps(askedOf(look))}, the output ${volts(look.output)}; ` +
-            stepInWords({ step: look.step, kind: 'stack-check' }),
-        };
-      }),
+function member(header: RunHeader, { climb }: StackSeen, name: string, place: number): Series {
+  const at = (look: StackLook): readonly ChartPoint[] => {
+    const there = voltagesThere(header, look).find(({ module }) => module === name);
+    if (there === undefined) return [];
+    const { volts: own, expanded } = there;
+    return [pointOf(look, own, expanded, `${name} ${volts(own)} ± ${plusMinus(expanded)}`)];
   };
-  return [...members, sum];
+  return { name, sort: memberLook(place), ...heldOrNot(climb, at) };
 }
 
-/** Shown where the string comes near it. */
-function levelsOf(highest: number): readonly Level[] {
-  return highest < 0.7 * touchable ? [] : [{ at: touchable, name: `may be touched ${touchable} V` }];
+/** At the terminals of the whole, by the modules' own voltages: what is in series with each is taken off. */
+function sum(header: RunHeader, { climb }: StackSeen): Series {
+  const at = (look: StackLook): readonly ChartPoint[] => {
+    const top = heightsThere(header, look).at(-1);
+    if (top === undefined || !isComplete(look, header)) return [];
+    const words = `the sum ${volts(top.top)} ± ${plusMinus(top.expanded)}, read at the output ${volts(look.output)}`;
+    return [pointOf(look, top.top, top.expanded, words)];
+  };
+  return { name: 'the sum', sort: { shape: 'square', look: sumLook }, ...heldOrNot(climb, at) };
+}
+
+function heldOrNot(
+  climb: readonly StackLook[],
+  at: (look: StackLook) => readonly ChartPoint[],
+): Pick<Series, 'held' | 'dropped'> {
+  const isDropped = ({ outcome }: StackLook): boolean => outcome === 'dropped';
+  return {
+    held: climb.filter((look) => !isDropped(look)).flatMap(at),
+    dropped: climb.filter(isDropped).flatMap(at),
+  };
+}
+
+function pointOf(look: StackLook, y: Volts, expanded: Volts, words: string): ChartPoint {
+  const { outcome, step } = look;
+  const asked = amps(askedOf(look));
+  return {
+    x: askedOf(look),
+    y,
+    between: () => [y - expanded, y + expanded],
+    says: () =>
+      `${words}, ${outcome === 'dropped' ? `dropped out when ${asked} were asked for` : `at ${asked}`}; ` +
+      stepInWords({ step, kind: 'stack-check' }),
+  };
+}
+
+function sortsOf(series: readonly Series[]): readonly PointSort[] {
+  return [
+    ...series.map(({ name, sort, held }) => ({ name, ...sort, points: held })),
+    {
+      name: 'dropped out, at what was asked for',
+      shape: 'cross',
+      look: droppedLook,
+      points: series.flatMap(({ dropped }) => dropped),
+    },
+  ];
+}
+
+function rising(points: readonly ChartPoint[]): readonly ChartPoint[] {
+  return [...points].sort((one, other) => one.x - other.x);
 }
 
 function marksOf({ climb, collapse }: StackSeen): readonly VerticalMark[] {
-  if (collapse !== undefined) {
-    return [{ at: collapse.at, label: `${collapse.module} collapses` }];
+  if (collapse === undefined) {
+    const dropped = climb.find(({ outcome }) => outcome === 'dropped');
+    return dropped === undefined
+      ? []
+      : [{ at: askedOf(dropped), label: `dropped out at ${amps(askedOf(dropped))}` }];
   }
-  const dropped = climb.find(({ outcome }) => outcome === 'dropped');
-  return dropped === undefined ? [] : [{ at: askedOf(dropped), label: 'dropped out' }];
+  const { at, held, module } = collapse;
+  const mark = { at, label: `${module} collapses at ${amps(at)}` };
+  return [held === undefined ? mark : { ...mark, between: { from: held, to: at, only: false } }];
 }
 
-function inWords({ climb }: StackSeen): string {
-  const last = climb.at(-1);
-  const each = last?.modules.map(({ module, volts: own }) => `${module} ${volts(own)}`) ?? [];
-  return `${climb.length} points. At ${amps(last === undefined ? 0 : askedOf(last))}: ${each.join(', ')}.`;
+function inWords({ findings, header }: Result, seen: StackSeen): string {
+  const held = seen.climb.findLast((look) => look.outcome !== 'dropped' && isComplete(look, header));
+  const each = held?.modules.map((one) => `${one.module} ${volts(one.volts)}`) ?? [];
+  const together = held === undefined ? undefined : heightsThere(header, held).at(-1)?.top;
+  return [
+    `${seen.climb.length} points.`,
+    ...(held === undefined || together === undefined
+      ? []
+      : [`At ${amps(askedOf(held))}: ${each.join(', ')}, together ${volts(together)}.`]),
+    ...weakestInWords(findings),
+    ...reversedInWords(seen),
+  ].join(' ');
 }
 
-function caption({ findings }: Result): string {
-  const weakest = findingNamed(findings, 'weakest-module');
-  if (weakest === undefined) return '';
-  const said =
-    weakest.value === 'none'
-      ? 'None of them gives way first'
-      : weakest.value === 'undetermined'
-        ? 'Which gives way first could not be told'
-        : `The weakest is ${String(weakest.value)}`;
-  return `${said}: ${weakest.note}.`;
+function caption({ findings }: Result, seen: StackSeen): string {
+  const { wrong } = seen;
+  return [
+    ...(wrong === undefined
+      ? weakestInWords(findings)
+      : [
+          `THEY DO NOT ADD UP: at ${amps(wrong.look.current)} the sum is ${volts(wrong.sum)} and the output gives ` +
+            `${volts(wrong.look.output)}, so nothing is told by them.`,
+        ]),
+    ...reversedInWords(seen),
+    'The bars hold each voltage with 95 %; of most they are smaller than the mark.',
+  ].join(' ');
+}
+
+function reversedInWords({ reversed }: StackSeen): readonly string[] {
+  return reversed.map(
+    ({ module, volts: lowest, at }) =>
+      `${module} was driven below zero by the others: ${volts(lowest)} when ${amps(at)} were asked for.`,
+  );
+}
+
+function plusMinus(expanded: Volts): string {
+  return formatQuantity(expanded, 'voltage', { significant: 2 });
 }
