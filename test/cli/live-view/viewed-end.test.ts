@@ -1,0 +1,74 @@
+import { describe, expect, it } from 'vitest';
+import { notBegun, viewedEnd } from '../../../src/cli/live-view/viewed-end.js';
+import type { PlanPerformed } from '../../../src/cli/perform-plan.js';
+import { loadMayStillBeOn } from '../../../src/bench/make-safe.js';
+import { runFolderAt } from '../../../src/record/run-folder.js';
+import { answer } from '../../../src/report/answer.js';
+import { understand } from '../../../src/report/understand.js';
+import { StoppedByOperator } from '../../../src/run/stopped.js';
+
+const path = 'fixtures/runs/20261130T091500Z-K1-real-limit';
+const result = understand(path);
+const completed: PlanPerformed = {
+  ending: { how: 'completed' },
+  safety: { kind: 'confirmed' },
+  sourceSafety: undefined,
+  status: 0,
+  folder: runFolderAt(path),
+  understood: { kind: 'result', result, unkept: undefined },
+};
+
+describe('the end of a run on a page', () => {
+  it('is what it came to, the answer first, where the record is, and that the load is off', () => {
+    expect(viewedEnd(completed)).toEqual({
+      how: 'completed',
+      reason: null,
+      answer: answer(result),
+      outcome: result.outcome,
+      safety: [{ confirmed: true, text: 'The load is off; it was read back.' }],
+      record: path,
+    });
+    expect(answer(result)[0]).toMatch(/^Load it continuously/);
+  });
+
+  it('says why it was stopped', () => {
+    const error = new StoppedByOperator('stopped in the live view');
+    const ending = { how: 'stopped', reason: error.message, error } as const;
+    expect(viewedEnd({ ...completed, ending })).toMatchObject({
+      how: 'stopped',
+      reason: 'stopped in the live view',
+    });
+  });
+
+  it('says what is to be done by hand where nobody could read back that the load is off', () => {
+    const safety = {
+      kind: 'unconfirmed',
+      why: 'the load does not answer',
+      advice: loadMayStillBeOn,
+    } as const;
+    const [words] = viewedEnd({ ...completed, safety }).safety;
+    expect(words).toMatchObject({ confirmed: false });
+    expect(words?.text).toContain('THE LOAD MAY STILL BE ON');
+    expect(words?.text).toContain('the load does not answer');
+  });
+
+  it('is told also where what the record shows can not be', () => {
+    const understood = { kind: 'error', error: new Error('the disk is full') } as const;
+    expect(viewedEnd({ ...completed, understood })).toMatchObject({
+      answer: ['What the record shows could not be told: the disk is full'],
+      outcome: 'not-judged',
+      safety: [{ confirmed: true }],
+    });
+  });
+
+  it('of a run that did not begin promises nothing', () => {
+    expect(notBegun(new Error('the load does not answer'))).toEqual({
+      how: 'failed',
+      reason: 'the load does not answer',
+      answer: [],
+      outcome: 'not-judged',
+      safety: [],
+      record: '',
+    });
+  });
+});
