@@ -1,5 +1,5 @@
 import { findingNamed } from '../../analysis/finding.js';
-import type { Outcome } from '../../judgement/judge.js';
+import type { Decision, Outcome } from '../../judgement/judge.js';
 import { element, type Markup } from '../page/markup.js';
 import { section } from '../page/page.js';
 import { table } from '../page/table.js';
@@ -30,21 +30,24 @@ export function decisionsSection({ decisions, findings }: Result): Markup | unde
         { heading: 'Finding', as: 'name' },
         { heading: 'Requirement', as: 'text' },
         { heading: 'Found', as: 'fixed' },
-        { heading: 'Decision', as: 'fixed' },
-        { heading: 'Why', as: 'long' },
+        { heading: 'Decision', as: 'long' },
       ],
-      decisions.map(({ finding, requirement, outcome, probability, note }) => {
-        const found = findingNamed(findings, finding);
+      decisions.map((decision) => {
+        const found = findingNamed(findings, decision.finding);
         return [
-          finding,
-          requirement,
+          decision.finding,
+          decision.requirement,
           found === undefined ? 'nothing' : foundInWords(found),
-          verdict(outcome),
-          [probability === null ? '' : `probability of conformity ${probabilityInWords(probability)}`, note]
-            .filter((part) => part !== '')
-            .join('; '),
+          decided(decision),
         ];
       }),
     ),
   );
+}
+
+function decided({ outcome, probability, note }: Decision): Markup {
+  const probably =
+    probability === null ? [] : [`probability of conformity ${probabilityInWords(probability)}`];
+  const why = [...probably, ...(note === '' ? [] : [note])];
+  return element('span', {}, verdict(outcome), why.length > 0 && [element('br', {}), why.join('; ')]);
 }

@@ -81,13 +81,12 @@ function stepsTable(result: Result): Markup | undefined {
   const { header, evidence } = result;
   const planned = header.steps.map(({ kind, summary }, index) => {
     const step = evidence.steps.find((each) => each.step === index + 1);
-    return [index + 1, kind, summary, ...(step === undefined ? notBegun : begun(result, step))];
+    return [`${index + 1} ${kind}`, summary, ...(step === undefined ? notBegun : begun(result, step))];
   });
   return table(
     'Steps as they were planned, and what came of each.',
     [
-      { heading: 'No.', as: 'name' },
-      { heading: 'Step', as: 'fixed' },
+      { heading: 'Step', as: 'name' },
       { heading: 'What it does', as: 'long' },
       { heading: 'Began', as: 'number' },
       { heading: 'Took', as: 'fixed' },

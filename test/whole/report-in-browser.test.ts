@@ -1,0 +1,185 @@
+import { existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { pathToFileURL } from 'node:url';
+import type { Browser, Page } from 'playwright-core';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import type { Result } from '../../src/report/result.js';
+import { runPage } from '../../src/report/run-page/run-page.js';
+import { eventsOf } from '../analysis/evidence-of.js';
+import { header, resultOf, steps } from '../report/fixed-record.js';
+import { nobodyShutOut, openBrowser, openWindow, patience } from '../view/page/browser.js';
+import { runShipped, shown } from './shipped-runs.js';
+import { textsInTheWay } from './texts-in-the-way.js';
+
+const made = { program: 'railproof test', date: new Date('2026-12-02T18:20:00Z') };
+const hostile = '"><script>document.title="gone"</script><img src=x onerror=alert(1)>'.repeat(3);
+
+/** What each shipped procedure has something to draw for, where it is shown. */
+const charts: Readonly<Record<string, readonly string[]>> = {
+  'quick-look': ['Voltage over current', 'What the points lie off the line', 'From the measured limit'],
+  'real-limit': [
+    'Voltage over current',
+    'What the points lie off the line',
+    'Past the limit: hiccup',
+    'From the measured limit',
+  ],
+  'limit-shape': [
+    'Voltage over current',
+    'What the points lie off the line',
+    'Past the limit: foldback',
+    'From the measured limit',
+  ],
+  'thermal-soak': [
+    'Voltage over current',
+    'Soak at 3.990 A',
+    'Voltage during the soak',
+    'From the measured limit',
+  ],
+  isolation: [],
+  acceptance: [
+    'Voltage over current',
+    'What the points lie off the line',
+    'Past the limit: hiccup',
+    'From the measured limit',
+  ],
+  sharing: [
+    'Voltage of the whole over its current',
+    'Past the limit: hiccup',
+    'Who carries how much',
+    'From the measured limit',
+  ],
+  stacking: ['Voltage of the whole over its current', 'Voltages in the string', 'From the measured limit'],
+};
+
+// Where chromium is missing nothing can be looked at; CI installs it, and there nothing is skipped.
+const isMissing = !existsSync('/usr/bin/chromium') && process.env['CI'] === undefined;
+
+describe.skipIf(isMissing)('the report of a run in a browser (needs /usr/bin/chromium)', () => {
+  let browser: Browser;
+  const folder = mkdtempSync(join(tmpdir(), 'railproof-reports-'));
+
+  beforeAll(async () => {
+    browser = await openBrowser();
+  }, patience);
+  afterAll(async () => {
+    await browser.close();
+    rmSync(folder, { recursive: true });
+  });
+
+  it('is looked at for each shipped procedure', () => {
+    expect(Object.keys(charts).sort()).toEqual(Object.keys(shown).sort());
+  });
+
+  it.each(Object.keys(charts))(
+    'of %s stands in its folder and opens alone, with its charts, for everybody, on a phone and on paper',
+    async (procedure) => {
+      const result = await runShipped(procedure, folder);
+      const file = join(folder, result.run, 'report.html');
+      const { page, heard, close } = await opened(file);
+      expect(heard).toEqual([pathToFileURL(file).href]);
+      expect(await page.locator('h1').innerText()).toContain(result.header.procedure.title);
+      expect(await page.locator('.word').first().innerText()).toBe('Conforms');
+
+      await hasCharts(page, charts[procedure] ?? []);
+      await standsClear(page);
+      await page.setViewportSize({ width: 1100, height: 800 });
+      expect(await page.evaluate<string[]>(cutOff)).toEqual([]);
+      await nobodyShutOut(page);
+      await page.setViewportSize({ width: 360, height: 800 });
+      expect(await page.evaluate<number>('document.documentElement.scrollWidth')).toBe(360);
+      await standsClear(page);
+      await printsOnA4(page);
+      expect(heard).toHaveLength(1);
+      await close();
+    },
+    patience,
+  );
+
+  it('shows hostile names as texts, and a stopped run as stopped', async () => {
+    const modules = header.modules.map((module) => ({ ...module, name: hostile, description: hostile }));
+    const events = [
+      ...eventsOf(steps).slice(0, -1),
+      { t: 70, event: 'notice', text: hostile } as const,
+      { t: 71, event: 'ended', how: 'stopped', reason: hostile, status: 3 } as const,
+    ];
+    const renamed = { ...header, modules, procedure: { ...header.procedure, title: hostile } };
+    const { page, heard, close } = await opened(kept('hostile', resultOf(events, renamed)));
+    expect(heard).toHaveLength(1);
+    expect(await page.title()).toContain(hostile);
+    expect(await page.locator('script, img, [onload], [onerror]').count()).toBe(0);
+    expect(await page.locator('.word').allInnerTexts()).toEqual([
+      'Stopped: this test was not finished',
+      'As far as it went: does not conform',
+    ]);
+    await page.setViewportSize({ width: 360, height: 800 });
+    expect(await page.evaluate<number>('document.documentElement.scrollWidth')).toBe(360);
+    await nobodyShutOut(page);
+    await close();
+  });
+
+  function kept(name: string, result: Result): string {
+    const file = join(folder, `${name}.html`);
+    writeFileSync(file, runPage(result, made));
+    return file;
+  }
+
+  /** The page, and all that it asked for or said. */
+  async function opened(file: string): Promise<{ page: Page; heard: string[]; close: () => Promise<void> }> {
+    const { page, complaints } = await openWindow(browser, 'to-look-into');
+    page.on('request', (request) => complaints.push(request.url()));
+    await page.goto(pathToFileURL(file).href);
+    return { page, heard: complaints, close: () => page.context().close() };
+  }
+});
+
+/** Each with its title, a description, and marks that can be seen. */
+async function hasCharts(page: Page, titles: readonly string[]): Promise<void> {
+  const drawings = await page.getByRole('img').all();
+  expect(drawings).toHaveLength(titles.length);
+  for (const [index, drawing] of drawings.entries()) {
+    // A number and its unit are held together on the page.
+    const title = (await drawing.locator('> title').textContent())?.replaceAll('\u00a0', ' ');
+    expect(title).toContain(titles[index]);
+    expect((await drawing.locator('> desc').textContent())?.length).toBeGreaterThan(20);
+  }
+  for (const marks of await page.evaluate<number[]>(marksOfDrawings)) expect(marks).toBeGreaterThan(2);
+}
+
+async function standsClear(page: Page): Promise<void> {
+  expect(await textsInTheWay(page)).toEqual([]);
+}
+
+/** 210 mm by 297 mm (ISO 216), with the margins of the page: what is wider or higher than that is cut off. */
+async function printsOnA4(page: Page): Promise<void> {
+  const pdf = (await page.pdf({ preferCSSPageSize: true })).toString('latin1');
+  const boxes = [...pdf.matchAll(/\/MediaBox \[([^\]]*)\]/g)].map(([, box]) =>
+    box?.trim().split(/\s+/).map(Number),
+  );
+  expect(boxes.length).toBeGreaterThan(1);
+  for (const box of boxes) {
+    expect(Math.abs((box?.[2] ?? NaN) - 595.28)).toBeLessThan(1);
+    expect(Math.abs((box?.[3] ?? NaN) - 841.89)).toBeLessThan(1);
+  }
+  await page.emulateMedia({ media: 'print' });
+  await page.setViewportSize({ width: 680, height: 994 });
+  expect(await page.evaluate<string[]>(offThePaper)).toEqual([]);
+  await page.emulateMedia({ media: 'screen' });
+}
+
+// What runs in the page is text, as the types of a browser are none of ours.
+const marksOfDrawings = `[...document.querySelectorAll('svg[role=img]')].map((svg) =>
+  [...svg.querySelectorAll('.line, .band, .bar, .shape, .whisker, .between')].filter((mark) => {
+    const { width, height } = mark.getBoundingClientRect();
+    return width + height > 0;
+  }).length)`;
+
+const cutOff = `[...document.querySelectorAll('.wide')].filter((one) => one.scrollWidth > one.clientWidth)
+  .map((one) => one.ariaLabel + ' ' + one.scrollWidth + ' > ' + one.clientWidth)`;
+
+const offThePaper = `[...document.querySelectorAll('main, header, table, figure, svg, .standing, .facts, .sign, .code')]
+  .filter((one) => {
+    const { right, height } = one.getBoundingClientRect();
+    return right > 681 || (height > 994 && one.matches('figure, svg, .standing, .sign'));
+  })
+  .map((one) => one.outerHTML.slice(0, 120))`;
