@@ -1,5 +1,5 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
-import type { Seconds } from '../quantity/quantity.js';
+import type { Seconds, Volts } from '../quantity/quantity.js';
 import type { LineFit } from '../statistics/line-fit.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
@@ -48,8 +48,7 @@ export function driftFindings(
   if (line === undefined) return [];
   const { fit, from } = line;
   const { instrument } = moduleVoltageErrors(header);
-  const moved = last.voltage - first.voltage;
-  const by = formatQuantity(Math.abs(moved), 'voltage', { significant: 2 });
+  const moved = movedInWords(last.voltage - first.voltage, instrument.resolution);
   const whole = formatQuantity(last.t - first.t, 'time', { significant: 2 });
   return [
     measured(
@@ -69,8 +68,17 @@ export function driftFindings(
         step,
         note:
           `over the last ${formatQuantity(last.t - from, 'time', { significant: 2 })}; ` +
-          `in all it ${moved < 0 ? 'fell' : 'rose'} by ${by} in ${whole}`,
+          `in all it ${moved} in ${whole}`,
       },
     ),
   ];
+}
+
+/** What no voltmeter of a bench shows; where a driver does not say what its own shows least. */
+const unreadable: Volts = 1e-9;
+
+/** Of less than could be read no digit is told. */
+function movedInWords(moved: Volts, resolution: Volts): string {
+  if (Math.abs(moved) < Math.max(resolution, unreadable)) return 'did not move by what could be read';
+  return `${moved < 0 ? 'fell' : 'rose'} by ${formatQuantity(Math.abs(moved), 'voltage', { significant: 2 })}`;
 }

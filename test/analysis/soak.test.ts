@@ -125,6 +125,11 @@ describe('what the voltage does meanwhile', () => {
     expect(found).toMatchObject({ dimension: 'voltage-rate', value: expect.closeTo(-0.036, 9) as number });
     expect(found?.note).toBe('over the last 10 min; in all it fell by 36 mV in 60 min');
   });
+
+  it('is told of no digit that nobody could read', () => {
+    const still = named('thermal-drift', { voltage: (t) => 15.1 + t * 1e-15, until: 3600 });
+    expect(still?.note).toBe('over the last 10 min; in all it did not move by what could be read in 60 min');
+  });
 });
 
 describe('a soak that ends in a dropout', () => {
