@@ -20,6 +20,7 @@ import type { Streams } from './streams.js';
 /** What can be begun anew, with the name of such a file. */
 const kinds = { bench: 'bench.yaml', module: 'K1.yaml', procedure: 'pump-line.yaml' } as const;
 type NewKind = keyof typeof kinds;
+export const newKinds = Object.keys(kinds) as readonly NewKind[];
 
 /** What stands in for the answers of somebody who isn't there. */
 const shippedExamples: Readonly<Record<NewKind, string>> = {

@@ -295,6 +295,15 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     done(schema(kind, streams));
   });
 
+  command(
+    'completion <shell>',
+    'a script by which bash, zsh or fish completes what is typed: commands, options, what is shipped, files',
+    'railproof completion bash > ~/.local/share/bash-completion/completions/railproof',
+  ).action(async (shell: string) => {
+    const { completion } = await import('./completion.js');
+    done(await completion(shell, program, streams));
+  });
+
   return program;
 }
 
