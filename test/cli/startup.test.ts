@@ -38,3 +38,9 @@ it('combining without a sheet loads no charts', async () => {
   expect(scripts.some((url) => url.endsWith('/arrangement/build-series.js'))).toBe(true);
   expect(scripts.filter((url) => /\/d3-|\/report\/(page|chart|diagram|sheet)\//.test(url))).toEqual([]);
 });
+
+it('analysing a record loads no page and no charts of one', async () => {
+  const scripts = await loadedBy('analyse', 'fixtures/runs/20261130T091500Z-K1-real-limit');
+  expect(scripts.some((url) => url.endsWith('/cli/analyse.js'))).toBe(true);
+  expect(scripts.filter((url) => /\/d3-|\/report\/(page|chart|run-page|run-charts)\//.test(url))).toEqual([]);
+});
