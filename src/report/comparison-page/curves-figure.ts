@@ -17,6 +17,8 @@ import { turnRow } from './turn-row.js';
 const title = 'Voltage over current, both records';
 /** A line and its interval are bent: so many places of it are reckoned. */
 const linePlaces = 61;
+/** Fewer make no curve: a soak alone stays at one current. */
+const leastPoints = 3;
 
 /** Currents at which a curve changes its course, and what is said of them. */
 const turns = [
@@ -37,11 +39,11 @@ interface Turn {
 export function curvesFigure(records: ComparedRecords): Markup | undefined {
   const sides = bothSides(records);
   const sorts = sides.map(pointsOf);
-  if (sorts.every(({ points }) => points.length === 0)) return undefined;
-  const lines = sides.flatMap(lineOf);
+  const seen = sides.map((side) => ({ ...side, seen: curveSeen(side.result.evidence) }));
+  if (seen.every((side) => side.seen.held.length < leastPoints)) return undefined;
+  const lines = seen.flatMap(lineOf);
   const found = turnsOf(records);
   const rows = found.map(({ words, compared }) => turnRow(words, compared, sides));
-  const moved = found.filter(({ compared }) => hasMoved(compared));
   const [, furthest] = extremesOf([
     ...sorts.flatMap(({ points }) => points.map(({ x }) => x)),
     ...rows.flatMap(({ places }) => places.map(({ at }) => at)),
@@ -59,7 +61,7 @@ export function curvesFigure(records: ComparedRecords): Markup | undefined {
       turns: rows,
       names: 'at-ends',
     }),
-    caption(records, lines.length > 0, moved),
+    caption(records, lines, found),
   );
 }
 
@@ -73,11 +75,21 @@ function pointsOf({ name, shape, look, result }: PageSide): PointSort {
   };
 }
 
-/** The line of regulation, and where there is a knee the line beyond it. */
-function lineOf({ name, look, result }: PageSide): readonly ChartLine[] {
-  const { line, regulated, knee, beyondKnee }: CurveSeen = curveSeen(result.evidence);
+interface SeenSide extends PageSide {
+  readonly seen: CurveSeen;
+}
+
+/**
+ * The line of regulation, and where there is a knee the line beyond it; where there is none, as of a group through
+ * ballasts, the held points joined.
+ */
+function lineOf({ name, look, seen }: SeenSide): readonly ChartLine[] {
+  const { line, regulated, knee, beyondKnee, held } = seen;
   const last = knee?.breakpoint ?? regulated.at(-1)?.current;
-  if (line === undefined || last === undefined) return [];
+  if (line === undefined || last === undefined) {
+    if (held.length < leastPoints) return [];
+    return [{ name, look, xs: held.map(({ current }) => current), ys: held.map(({ voltage }) => voltage) }];
+  }
   const xs = Array.from({ length: linePlaces }, (_, index) => (last * index) / (linePlaces - 1));
   const there = xs.map((current) => lineAt(line, current));
   const beyond = beyondKnee.slice(1);
@@ -118,21 +130,26 @@ function inWords(sorts: readonly PointSort[], found: readonly Turn[]): string {
 
 function caption(
   { comparison: { findings } }: ComparedRecords,
-  hasLine: boolean,
-  moved: readonly Turn[],
+  lines: readonly ChartLine[],
+  found: readonly Turn[],
 ): string {
   const droop = findings.find(({ finding }) => finding === 'droop-resistance');
-  return [
-    ...(hasLine
-      ? [
-          'Each line goes through the regulated points of its record; the shaded band holds the line with 95 %, by the scatter of its points.',
-        ]
-      : []),
-    ...(droop === undefined
-      ? []
-      : [`The droop ${hasMoved(droop) ? 'moved' : 'was not seen to move'}: ${movedInWords(droop)}.`]),
-    moved.length === 0
-      ? 'Below: where the curves turn, with 95 %; nothing of it was seen to move.'
-      : `Below: where the curves turn, with 95 %; an arrow marks what moved: ${listed(moved.map(({ compared }) => compared.finding))}.`,
-  ].join(' ');
+  const moved = found.filter(({ compared }) => hasMoved(compared)).map(({ compared }) => compared.finding);
+  const said = [
+    lines.some(({ band }) => band !== undefined) &&
+      'Each line goes through the regulated points of its record; the shaded band holds the line with 95 %, by the ' +
+        'scatter of its points.',
+    lines.some(({ band }) => band === undefined) &&
+      'Where no line could be laid through the points of a record they are joined.',
+    droop !== undefined &&
+      `The droop ${hasMoved(droop) ? 'moved' : 'was not seen to move'}: ${movedInWords(droop)}.`,
+    found.length > 0 && `Below: where the curves turn, with 95 %; ${arrowsInWords(moved)}.`,
+  ];
+  return said.filter((each) => each !== false).join(' ');
+}
+
+function arrowsInWords(moved: readonly string[]): string {
+  return moved.length === 0
+    ? 'nothing of it was seen to move'
+    : `an arrow marks what moved: ${listed(moved)}`;
 }

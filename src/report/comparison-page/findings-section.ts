@@ -23,7 +23,7 @@ export function findingsSection(records: ComparedRecords): Markup {
         { heading: 'Finding', as: 'name' },
         { heading: 'Earlier', as: 'number' },
         { heading: 'Later', as: 'number' },
-        { heading: 'Difference', as: 'text' },
+        { heading: 'Difference' },
         { heading: 'Verdict', as: 'long' },
       ],
       findings.map(cellsOf),

@@ -1,3 +1,4 @@
+import { valueInWords } from '../../judgement/change-in-words.js';
 import type { Compared } from '../../judgement/compare.js';
 import { type Movement, movementOf } from '../../judgement/movement.js';
 import { listed } from '../../quantity/listed.js';
@@ -30,7 +31,9 @@ export function movementsSection({ comparison: { findings } }: ComparedRecords):
         ...oneByOne('Moved, and nothing is asked of it', unasked),
         ...inOne('Not seen to move', of('as-it-was')),
         ...oneByOne('Without an uncertainty, as it stands', of('as-it-stands')),
-        ...oneByOne('Can not be told', of('not-told')),
+        ...oneByOne('Can not be told', of('not-told').filter(isInBoth)),
+        ...alone('In the earlier record only', findings, 'before', 'after'),
+        ...alone('In the later record only', findings, 'after', 'before'),
       ].filter((said) => said !== false),
     ),
     element(
@@ -56,4 +59,23 @@ function oneByOne(lead: string, findings: readonly Compared[]): readonly Content
       `${finding} ${movedInWords(compared)}${asked}${note === '' ? '' : `; ${note}`}.`,
     ];
   });
+}
+
+function isInBoth({ before, after }: Compared): boolean {
+  return before !== undefined && after !== undefined;
+}
+
+function alone(
+  lead: string,
+  findings: readonly Compared[],
+  there: 'before' | 'after',
+  missing: 'before' | 'after',
+): readonly Content[] {
+  const said = findings.flatMap((compared) => {
+    const one = compared[there];
+    return one === undefined || compared[missing] !== undefined
+      ? []
+      : [`${compared.finding} ${valueInWords(one)}`];
+  });
+  return said.length === 0 ? [] : [[element('strong', {}, `${lead}: `), `${listed(said)}.`]];
 }

@@ -7,6 +7,7 @@ import { formatQuantity } from '../../quantity/format-quantity.js';
 import type { Seconds } from '../../quantity/quantity.js';
 import type { ChartLine } from '../chart/drawn-line.js';
 import { type ChartPoint, pointChart } from '../chart/point-chart.js';
+import { thinned } from '../chart/thinned.js';
 import type { ComparedRecords } from '../comparison.js';
 import type { Markup } from '../page/markup.js';
 import { amps, foundInWords } from '../run-charts/in-words.js';
@@ -16,6 +17,8 @@ import { bothSides, type PageSide } from './sides.js';
 
 const title = 'Temperature under load, both records';
 const places = 81;
+/** Some fifty points of each: more would hide the lines, and each other. */
+const stretches = 25;
 
 interface Soak extends PageSide {
   readonly seen: SoakSeen;
@@ -43,7 +46,7 @@ export function soaksFigure(records: ComparedRecords): Markup | undefined {
         name: `read, ${soak.name}, at ${amps(soak.seen.current)}`,
         shape: soak.look === 0 ? 'dot' : 'plus',
         look: soak.look,
-        points: pointsOf(soak),
+        points: thinned(pointsOf(soak), stretches),
       })),
       lines: soaks.flatMap(wayOf),
       names: 'at-ends',
