@@ -9,7 +9,9 @@ export class StoppedByOperator extends RailproofError {
 /** Nobody can answer at the terminal any more. */
 export class TerminalClosed extends StoppedByOperator {
   constructor() {
-    super('the terminal was closed at a question', { advice: 'run it in a terminal that stays open' });
+    super('the terminal was closed at a question', {
+      advice: 'run it in a terminal that stays open, or with --view, which serves a page to answer on',
+    });
   }
 }
 
