@@ -9,6 +9,8 @@ import { fishQuoted } from './shell-quoted.js';
 /** Completion for fish, which is told option by option what there is; files and folders are its own affair. */
 export function fishScript({ name, options, commands }: CompletedProgram): string {
   const complete = `complete -c ${name}`;
+  const condition = (test: string, ...words: readonly string[]): string =>
+    fishQuoted(`__${name}_${test} ${words.join(' ')}`);
   return `# fish completion of ${name}: made by '${name} completion fish'.
 
 function __${name}_first
@@ -18,6 +20,14 @@ end
 function __${name}_in -a command
   set -l words (commandline -opc)
   test "$words[2]" = "$command"
+end
+
+# Whether this is the last option that was typed: all words up to the next one are its own.
+function __${name}_after -a command option
+  set -l words (commandline -opc)
+  test "$words[2]" = "$command"; or return 1
+  set -l typed (string match -- '-*' $words[3..])
+  test "$typed[-1]" = "$option"
 end
 
 # Whether the cursor is at this place of the command; options, and the words of those that take one, do not count.
@@ -48,11 +58,15 @@ ${[
   ...options.map((option) => `${complete} -n __${name}_first ${optionText(option)}`),
   ...commands.flatMap((command) => [
     ...command.options.map(
-      (option) => `${complete} -n ${fishQuoted(`__${name}_in ${command.word}`)} ${optionText(option)}`,
+      (option) => `${complete} -n ${condition('in', command.word)} ${optionText(option)}`,
+    ),
+    ...command.options.flatMap(({ flags, value, isRepeated }) =>
+      isRepeated && value !== undefined
+        ? flags.map((flag) => `${complete} -n ${condition('after', command.word, flag)} ${placeText(value)}`)
+        : [],
     ),
     ...command.places.map(
-      (place, index) =>
-        `${complete} -n ${fishQuoted(`__${name}_at ${whereIs(command, index)}`)} ${placeText(place)}`,
+      (place, index) => `${complete} -n ${condition('at', whereIs(command, index))} ${placeText(place)}`,
     ),
   ]),
 ].join('\n')}
