@@ -29,9 +29,9 @@ export function budgetsSection({ findings, evidence }: Result): Markup | undefin
     alike(budgeted).map(([first, ...others]) => budgetOf([first, ...others], behind(first))),
     others.length > 0 && element('h3', {}, 'Without a budget: words, bounds and choices'),
     bullets(
-      others.map((finding) => [
-        element('strong', {}, finding.name),
-        ` ${foundInWords(finding)}. ${behind(finding)}`,
+      byStep(others).map(([first, ...rest]) => [
+        listed([first, ...rest].map((finding) => `${finding.name} ${foundInWords(finding)}`)),
+        `. ${behind(first)}`,
       ]),
     ),
   );
@@ -41,10 +41,19 @@ type Alike = readonly [Finding, ...Finding[]];
 
 /** What one finding took over from another whole has one budget with it. */
 function alike(findings: readonly Finding[]): readonly Alike[] {
+  return grouped(findings, ({ value, dimension, bound, step, budget }) =>
+    JSON.stringify([value, dimension, bound, step, budget]),
+  );
+}
+
+function byStep(findings: readonly Finding[]): readonly Alike[] {
+  return grouped(findings, ({ step }) => String(step));
+}
+
+function grouped(findings: readonly Finding[], keyOf: (finding: Finding) => string): readonly Alike[] {
   const groups = new Map<string, [Finding, ...Finding[]]>();
   for (const finding of findings) {
-    const { value, dimension, bound, step, budget } = finding;
-    const key = JSON.stringify([value, dimension, bound, step, budget]);
+    const key = keyOf(finding);
     const group = groups.get(key);
     if (group === undefined) groups.set(key, [finding]);
     else group.push(finding);
@@ -108,10 +117,11 @@ function readingsInWords(steps: readonly StepEvidence[], { step: number }: Findi
   const step = steps.find((each) => each.step === number);
   if (step === undefined) return '';
   const { points, readings, lines, kind } = step;
-  return (
-    `Step ${step.step}, ${kind}: ${counted(points.length, 'point')}, ${counted(readings, 'reading')}; ` +
-    `lines ${lines.first} to ${lines.last} of journal.jsonl, the rows of step ${step.step} in readings.csv.`
-  );
+  const journal = `lines ${lines.first} to ${lines.last} of journal.jsonl`;
+  return readings === 0
+    ? `Step ${step.step}, ${kind}: no readings; ${journal}.`
+    : `Step ${step.step}, ${kind}: ${counted(points.length, 'point')}, ${counted(readings, 'reading')}; ` +
+        `${journal}, the rows of step ${step.step} in readings.csv.`;
 }
 
 /** Below which a contribution is what adding and multiplying lose. */

@@ -59,7 +59,7 @@ function inputsTogether(kept: readonly Happening[]): readonly Row[] {
   const rows: Row[] = [];
   const inputs = new Map<number | undefined, number>();
   for (const { kind, step, first, last, text, times } of kept) {
-    const said = times === 1 ? text : `${text}, ${times} times`;
+    const said = times === 1 ? text : `${text} (${times} times)`;
     const at = kind === 'input' ? inputs.get(step) : undefined;
     const before = at === undefined ? undefined : rows[at];
     if (at !== undefined && before !== undefined) {
