@@ -66,9 +66,17 @@ async function pasteBlock(lines: readonly string[]): Promise<readonly string[]> 
   return pasted;
 }
 
+/** Two readers at once are enough for a small machine. */
+async function pasteEverySecond(first: number): Promise<readonly string[]> {
+  const pasted: string[] = [];
+  for (const [index, lines] of blocks.entries())
+    if (index % 2 === first) pasted.push(...(await pasteBlock(lines)));
+  return pasted;
+}
+
 describe('the README', () => {
-  it('shows commands that run as they are pasted, and end as it says', { timeout: 240_000 }, async () => {
-    const pasted = (await Promise.all(blocks.map(pasteBlock))).flat();
+  it('shows commands that run as they are pasted, and end as it says', { timeout: 900_000 }, async () => {
+    const pasted = (await Promise.all([0, 1].map(pasteEverySecond))).flat();
     expect(pasted.length).toBeGreaterThan(15);
     const left = blocks.flat().filter((line) => !pasted.includes(line));
     expect(left.map((line) => line.split(' ')[1]).sort()).toEqual(['drivers', 'drivers', 'new', 'new']);

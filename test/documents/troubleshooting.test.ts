@@ -49,10 +49,14 @@ async function printedUnder(heading: string): Promise<string> {
 }
 
 describe('the page for what puzzles at the bench', () => {
-  it.each(entries)('quotes under "$heading" what is really printed', async ({ heading, quoted }) => {
-    const printed = await printedUnder(heading);
-    for (const words of quoted) expect(printed).toContain(words.replace(/\s+/g, ' ').toLowerCase());
-  });
+  it.each(entries)(
+    'quotes under "$heading" what is really printed',
+    { timeout: 180_000 },
+    async ({ heading, quoted }) => {
+      const printed = await printedUnder(heading);
+      for (const words of quoted) expect(printed).toContain(words.replace(/\s+/g, ' ').toLowerCase());
+    },
+  );
 
   it('has each entry that is held to what is printed, and a link to each', () => {
     const headings = entries.map(({ heading }) => heading);
