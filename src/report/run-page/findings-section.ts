@@ -31,7 +31,7 @@ export function findingsSection({ findings, decisions }: Result): Markup {
         foundInWords(finding),
         factorInWords(finding),
         finding.step ?? '',
-        element('span', {}, decided(finding.name), finding.note),
+        toBeKnown(decided(finding.name), finding.note),
       ]),
     ),
   );
@@ -39,4 +39,9 @@ export function findingsSection({ findings, decisions }: Result): Markup {
 
 function factorInWords(finding: Finding): string {
   return coverageOf(finding)?.factor.toFixed(2) ?? '';
+}
+
+/** Empty where there is nothing, so that a narrow screen leaves its line out. */
+function toBeKnown(decisions: readonly Content[], note: string): Content {
+  return decisions.length === 0 ? note : element('span', {}, decisions, note);
 }
