@@ -112,6 +112,27 @@ describe('compare', () => {
     expect(status).toBe(0);
   });
 
+  it('keeps a page over an older one of its kind, and over nothing else', async () => {
+    const page = join(folder, 'comparison.html');
+    for (const later of [good, bad]) {
+      const { stdout, stderr } = await railproof('compare', good, later, '--page', page);
+      expect(stdout).not.toContain('comparison.html');
+      expect(stderr).toBe(`Comparison: ${page}\n`);
+    }
+    expect(readFileSync(page, 'utf8')).toMatch(/Not as it should be[^]*droop-resistance moved from 1/);
+    const other = file('notes.html', '<p>notes</p>');
+    const { status, stdout, stderr } = await railproof('compare', good, bad, '--page', other);
+    expect({ status, stdout }).toEqual({ status: 64, stdout: '' });
+    expect(stderr).toContain('is no comparison, so it is not written over');
+    expect(readFileSync(other, 'utf8')).toBe('<p>notes</p>');
+  });
+
+  it('shows no page that is nowhere to be written', async () => {
+    const { status, stdout, stderr } = await railproof('compare', good, bad, '--open');
+    expect({ status, stdout }).toEqual({ status: 64, stdout: '' });
+    expect(stderr).toContain('--page comparison.html --open');
+  });
+
   it('never says that all is well by a record that was cut off or damaged', async () => {
     const cut = copyWith('cut', (journal) => journal.slice(0, -200));
     const damaged = copyWith('damaged', (journal) => journal.replace(/"value":14/, '"value":13'));

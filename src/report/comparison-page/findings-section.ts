@@ -55,9 +55,10 @@ function becauseOf(compared: Compared): string {
   return [allowed, chance, note].filter((part) => part !== '').join('; ');
 }
 
-/** `5.281` above `± 0.018 A`: a column of values that is no wider than they are. */
+/** `5.281` above `± 0.018 A`, `at least` above `4 A`: a column of values that is no wider than they are. */
 function inTwoLines(value: string): Content {
-  return value.split(' ± ').map((part, index) => (index === 0 ? part : [element('br', {}), `± ${part}`]));
+  const [first = '', ...others] = value.split(/(?<=^at least) | (?=± )/);
+  return [first, others.map((part) => [element('br', {}), part])];
 }
 
 function differenceOf(compared: Compared): Content {
