@@ -47,13 +47,16 @@ function whatBecameOf(
   const last = later.at(-1);
   if (last === undefined) return undefined;
   const { length } = look.currents;
-  const currents = later.flatMap(
-    ({ currents }) => currents.find(({ module }) => module === each.module)?.current ?? [],
-  );
+  // Given up at the first that is otherwise: of a long record nearly all is.
+  const fromThenOn = (is: (current: Amperes) => boolean): boolean =>
+    later.every(({ currents }) => {
+      const current = currents.find(({ module }) => module === each.module)?.current;
+      return current === undefined || is(current);
+    });
   const carries = each.current > look.total / length / 2;
-  if (carries && currents.every((current) => current < nothing * each.current)) return 'vanished';
+  if (carries && fromThenOn((current) => current < nothing * each.current)) return 'vanished';
   const isLargest = look.currents.every(({ current }) => current <= each.current);
   const share = (last.total - look.total) / length;
-  const stays = currents.every((current) => Math.abs(current - each.current) < noGrowth * share);
-  return isLargest && later.length >= following && stays ? 'stays' : undefined;
+  if (!isLargest || later.length < following) return undefined;
+  return fromThenOn((current) => Math.abs(current - each.current) < noGrowth * share) ? 'stays' : undefined;
 }

@@ -30,27 +30,31 @@ export function sharingSeen(evidence: Evidence): SharingSeen | undefined {
   return { looks, kirchhoff, held, saturated: firstToSaturate(held) };
 }
 
-/** What one module carries at a look, with what it may be off by. */
-export interface ShareThere {
+/** What one module carries at a look, as it was read. */
+export interface ShareRead {
   readonly module: string;
   readonly current: Amperes;
-  /** 95 %. */
-  readonly currentExpanded: Amperes;
   /** Of the sum of all. */
   readonly share: Ratio;
+}
+
+/** With what it may be off by, 95 %. */
+export interface ShareThere extends ShareRead {
+  readonly currentExpanded: Amperes;
   readonly shareExpanded: Ratio;
 }
 
 /** Of every module at a look, in the order of the circuit. */
-export function sharesThere(header: RunHeader, look: GroupLook): readonly ShareThere[] {
+export function sharesRead(look: GroupLook): readonly ShareRead[] {
   const sum = sumOf(look);
-  return look.currents.map(({ module, current }, index) => {
-    return {
-      module,
-      current,
-      currentExpanded: expandedCurrent(header, look, index),
-      share: current / sum,
-      shareExpanded: combine(shareBudget(header, look, index)).expanded,
-    };
-  });
+  return look.currents.map(({ module, current }) => ({ module, current, share: current / sum }));
+}
+
+/** The same with its uncertainties, which take some work to reckon. */
+export function sharesThere(header: RunHeader, look: GroupLook): readonly ShareThere[] {
+  return sharesRead(look).map((read, index) => ({
+    ...read,
+    currentExpanded: expandedCurrent(header, look, index),
+    shareExpanded: combine(shareBudget(header, look, index)).expanded,
+  }));
 }

@@ -50,6 +50,7 @@ export function stackSeen(evidence: Evidence): StackSeen | undefined {
 function reversedIn(header: RunHeader, climb: readonly StackLook[]): readonly Reversed[] {
   return header.modules.flatMap(({ name }) => {
     const below = climb
+      .filter(({ modules }) => modules.some(({ module, volts }) => module === name && volts < 0))
       .flatMap((look) => voltagesThere(header, look).map((each) => ({ ...each, at: askedOf(look) })))
       .filter(({ module, volts, expanded }) => module === name && volts + expanded < 0)
       .sort((one, other) => one.volts - other.volts);

@@ -8,10 +8,13 @@ import type { RunHeader } from '../../src/record/run-header.js';
 import type { Markup } from '../../src/report/page/markup.js';
 import { pageText } from '../../src/report/page/page.js';
 import type { Result } from '../../src/report/result.js';
+import { deratingFigure } from '../../src/report/run-charts/derating-chart.js';
 import { curveFigure } from '../../src/report/run-charts/curve-chart.js';
 import { limitTraceFigure } from '../../src/report/run-charts/limit-trace-chart.js';
 import { residualsFigure } from '../../src/report/run-charts/residuals-chart.js';
+import { sharesFigure } from '../../src/report/run-charts/shares-chart.js';
 import { soakFigure } from '../../src/report/run-charts/soak-chart.js';
+import { stackFigure } from '../../src/report/run-charts/stack-chart.js';
 import { understand } from '../../src/report/understand.js';
 import { evenly, headerOf } from '../analysis/evidence-of.js';
 import { thermometerHeader, warming } from '../analysis/soak-events.js';
@@ -25,29 +28,50 @@ import {
   soaked,
   upAndBack,
 } from '../report/run-charts/made-results.js';
+import { alike, drawer, shared, stacked } from '../report/run-charts/made-groups.js';
 import { textsInTheWay } from './texts-in-the-way.js';
 
 const executablePath = '/usr/bin/chromium';
 const hostile = '"><script>document.title="gone"</script><img src=x onerror=alert(1)>'.repeat(4);
 const room = { ambient: { temperature: 22, uncertainty: 0.5 } };
-const figures = [curveFigure, residualsFigure, limitTraceFigure, soakFigure];
+const figures = [
+  curveFigure,
+  residualsFigure,
+  limitTraceFigure,
+  soakFigure,
+  sharesFigure,
+  stackFigure,
+  deratingFigure,
+];
+const climb = evenly(0, 4, 5).map((set) => ({ set }));
 
 /** What each is of, and how many charts it has. */
 const results: readonly (readonly [name: string, result: Result, charts: number])[] = [
-  ['a kept record', understand('fixtures/runs/20261130T091500Z-K1-real-limit'), 3],
-  ['a hiccuping module that swings', resultOf(), 3],
-  ['both ways and a search', madeResult([idle, upAndBack, search]), 2],
-  ['a knee', madeResult([bent]), 2],
+  ['a kept record', understand('fixtures/runs/20261130T091500Z-K1-real-limit'), 4],
+  ['a hiccuping module that swings', resultOf(), 4],
+  ['both ways and a search', madeResult([idle, upAndBack, search]), 3],
+  ['a knee', madeResult([bent]), 3],
   ['an open circuit alone', madeResult([idle]), 1],
   ['a limit of constant power', limited((voltage) => 75 / voltage, evenly(14.7, 8, 12)), 2],
   ['a limit of constant current', limited(() => 5), 2],
   [
     'a soak that was cut short',
     soaked({ temperature: warming, until: 1080 }, thermometerHeader(room, { limit: 60 })),
-    3,
+    4,
   ],
-  ['a soak that took a day', soaked({ temperature: warming, until: 86_400 }, thermometerHeader()), 3],
-  ['hostile names', named(hostile), 2],
+  ['a soak that took a day', soaked({ temperature: warming, until: 86_400 }, thermometerHeader()), 4],
+  ['hostile names', named(hostile), 3],
+  ['one that hogs', shared({ K1: { ...alike, voltage: 15.9 }, K2: alike }, evenly(0.5, 4, 8)), 3],
+  ['eight that share', shared(drawer(8), evenly(3.2, 32, 10)), 3],
+  ['a group of hostile names', shared({ [hostile]: alike, [`${hostile}2`]: alike }, evenly(1, 8, 4)), 3],
+  ['a group at one load', shared(drawer(2), [4]), 3],
+  ['a string of eight', stacked(drawer(8), climb), 4],
+  ['a string of hostile names', stacked({ [hostile]: alike, [`${hostile}2`]: alike }, climb), 4],
+  [
+    'a string in which one is driven below zero',
+    stacked(drawer(3), [...climb, { set: 4.5, outcome: 'dropped', current: 0.2, change: { K2: -0.71 } }]),
+    4,
+  ],
 ];
 
 // Where chromium is missing nothing can be looked at; CI installs it, and there nothing is skipped.
@@ -74,7 +98,7 @@ describe.skipIf(isMissing)('the charts of a record in a browser (needs /usr/bin/
       for (const drawing of drawings) {
         expect((await drawing.locator('> title').textContent())?.length).toBeGreaterThan(5);
         expect((await drawing.locator('> desc').textContent())?.length).toBeGreaterThan(20);
-        expect(await drawing.locator('.shape').count()).toBeGreaterThan(0);
+        expect(await drawing.locator('.shape, .bar').count()).toBeGreaterThan(0);
       }
       expect(await textsInTheWay(page)).toEqual([]);
       expect(await page.evaluate<string[]>(outside)).toEqual([]);

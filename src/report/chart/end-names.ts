@@ -21,10 +21,16 @@ export function roomForNames(names: readonly string[]): number {
   return Math.max(...names.map((name) => textWidth(cutToWidth(name, longestName))), 0) + 26;
 }
 
-/** Each as near to its own end as the others allow, and joined to it. */
-export function endNames(ends: readonly EndName[], frame: Frame): readonly Markup[] {
+/** Below the edge of the plot, so that a name there does not meet the words of a mark above it. */
+const clear = 10;
+
+/**
+ * Each as near to its own end as the others allow, and joined to it.
+ * @param marked whether words of marks stand above the plot.
+ */
+export function endNames(ends: readonly EndName[], frame: Frame, marked = false): readonly Markup[] {
   const clamped = ends.map(({ y }) => Math.max(frame.y.end, Math.min(frame.y.start, y)));
-  const places = spread(clamped, lineHeight, [frame.y.end, frame.y.start]);
+  const places = spread(clamped, lineHeight, [frame.y.end + (marked ? clear : 0), frame.y.start]);
   return ends.map(({ name, x, class: own }, index) => {
     const y = clamped[index] ?? 0;
     const place = places[index] ?? y;

@@ -115,6 +115,7 @@ export function pointChart(chart: PointChart): Markup {
         ...beside.map((line) => endOf(line, frame)),
       ],
       frame,
+      marks.length > 0,
     ),
     turnRows(turns, frame.height - roomForKey(key, chartWidth) - roomForTurns(turns), frame),
     drawnKey(key, frame),

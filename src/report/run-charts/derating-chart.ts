@@ -1,7 +1,6 @@
 import { type Factor, type Finding, findingNamed } from '../../analysis/finding.js';
 import { asGiven } from '../../analysis/in-words.js';
 import { ratedOf } from '../../analysis/rated.js';
-import { formatQuantity } from '../../quantity/format-quantity.js';
 import type { Amperes, Ratio } from '../../quantity/quantity.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { type Fall, fallingChart } from '../chart/falling-chart.js';
@@ -84,5 +83,5 @@ function asWritten(factor: Ratio): string {
 
 function inWords(falls: readonly Fall[], plate: Amperes): string {
   const said = falls.map(({ name, says }) => `${name} ${says}`);
-  return `${said.join('; ')}. The nameplate says ${formatQuantity(Number(plate.toPrecision(6)), 'current')}.`;
+  return `${said.join('; ')}. The nameplate says ${asGiven(plate, 'current')}.`;
 }

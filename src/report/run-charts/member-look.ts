@@ -28,3 +28,9 @@ export function lineThrough(name: string, points: readonly ChartPoint[], look: n
   const kept = thinned(points, stretches);
   return { name, xs: kept.map(({ x }) => x), ys: kept.map(({ y }) => y), look };
 }
+
+/** Reckoned when it is first asked for: of many points few are drawn. */
+export function once<T>(reckoned: () => T): () => T {
+  let known: { readonly value: T } | undefined;
+  return () => (known ??= { value: reckoned() }).value;
+}

@@ -1,7 +1,15 @@
 import { findingNamed } from '../../analysis/finding.js';
 import { asGiven } from '../../analysis/in-words.js';
 import type { GroupLook } from '../../analysis/module-currents.js';
-import { type ShareThere, type SharingSeen, sharesThere, sharingSeen } from '../../analysis/sharing-seen.js';
+import {
+  type ShareRead,
+  type ShareThere,
+  type SharingSeen,
+  sharesRead,
+  sharesThere,
+  sharingSeen,
+} from '../../analysis/sharing-seen.js';
+import { carriedAt } from '../../analysis/shares.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
 import type { Amperes, Ratio } from '../../quantity/quantity.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
@@ -15,7 +23,7 @@ import type { Markup } from '../page/markup.js';
 import { isWhole, type Result } from '../result.js';
 import { figure } from '../sheet/figure.js';
 import { amps, foundInWords, stepInWords } from './in-words.js';
-import { lineThrough, memberLook } from './member-look.js';
+import { lineThrough, memberLook, once } from './member-look.js';
 
 const title = 'Who carries how much';
 /** The line of a label is bent: so many places of it are reckoned. */
@@ -36,9 +44,10 @@ export function sharesFigure(result: Result): Markup | undefined {
   const sorts = sortsOf(header, seen.held);
   const last = sharesThere(header, highest);
   const hog = findingNamed(findings, 'hogging-module')?.value;
-  const members = sorts.map(({ points, look }, place) => {
-    const { module, share } = last[place] ?? { module: '', share: 0 };
-    return lineThrough(`${percent(share)} ${module}${module === hog ? ', hogs' : ''}`, points, look);
+  const members = carriedAt(highest).map(({ module, share }, place) => {
+    const { points, look } = sorts[place] ?? { points: [], look: place };
+    const along = points.map((point) => ({ ...point, y: Math.min(1, Math.max(0, point.y)) }));
+    return lineThrough(`${percent(share)} ${module}${module === hog ? ', hogs' : ''}`, along, look);
   });
   return figure(
     title,
@@ -59,27 +68,32 @@ export function sharesFigure(result: Result): Markup | undefined {
 }
 
 function sortsOf(header: RunHeader, held: readonly GroupLook[]): readonly PointSort[] {
-  const looks = held.map((look) => ({ look, there: sharesThere(header, look) }));
+  const looks = held.map((look) => ({
+    look,
+    read: sharesRead(look),
+    there: once(() => sharesThere(header, look)),
+  }));
   return header.modules.map(({ name }, place) => ({
     name,
     ...memberLook(place),
-    points: looks.flatMap(({ look, there }) => {
-      const one = there[place];
-      return one === undefined ? [] : [pointOf(one, look)];
+    points: looks.flatMap(({ look, read, there }) => {
+      const one = read[place];
+      return one === undefined ? [] : [pointOf(one, look, () => there()[place]?.shareExpanded ?? 0)];
     }),
   }));
 }
 
 function pointOf(
-  { module, share, shareExpanded, current }: ShareThere,
+  { module, share, current }: ShareRead,
   { total, step }: GroupLook,
+  expanded: () => Ratio,
 ): ChartPoint {
   return {
     x: total,
     y: share,
-    between: () => [share - shareExpanded, share + shareExpanded],
+    between: () => [share - expanded(), share + expanded()],
     says: () =>
-      `${module} ${percent(share)} ± ${percent(shareExpanded)}: ${amps(current)} of ${amps(total)}; ` +
+      `${module} ${percent(share)} ± ${percent(expanded())}: ${amps(current)} of ${amps(total)}; ` +
       stepInWords({ step, kind: 'sharing-log' }),
   };
 }

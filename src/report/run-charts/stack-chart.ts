@@ -1,4 +1,5 @@
-import type { StackLook } from '../../analysis/module-voltages.js';
+import type { Finding } from '../../analysis/finding.js';
+import { type StackLook, sumUpTo } from '../../analysis/module-voltages.js';
 import { isComplete } from '../../analysis/place-looks.js';
 import {
   askedOf,
@@ -9,17 +10,18 @@ import {
   voltagesThere,
 } from '../../analysis/stack-seen.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
-import type { Volts } from '../../quantity/quantity.js';
+import type { Amperes, Volts } from '../../quantity/quantity.js';
 import type { RunHeader } from '../../record/run-header.js';
 import { extremesOf } from '../chart/axis.js';
+import type { ChartLine } from '../chart/drawn-line.js';
 import type { VerticalMark } from '../chart/marks.js';
-import { type ChartPoint, pointChart, type PointSort } from '../chart/point-chart.js';
+import { type ChartPoint, type PointAxis, pointChart, type PointSort } from '../chart/point-chart.js';
 import { weakestInWords } from '../group-answer.js';
-import type { Markup } from '../page/markup.js';
+import { type Markup, together } from '../page/markup.js';
 import type { Result } from '../result.js';
 import { figure } from '../sheet/figure.js';
 import { amps, stepInWords, volts } from './in-words.js';
-import { lineThrough, memberLook } from './member-look.js';
+import { lineThrough, memberLook, once } from './member-look.js';
 
 const title = 'Voltages in the string';
 /** From so much of what may be touched on it is shown. */
@@ -28,6 +30,8 @@ const comesNear = 0.7;
 const noticeable = 0.01;
 const sumLook = 5;
 const droppedLook = 4;
+const whole = { height: 240, left: 66, right: 150 };
+const small = { ...whole, height: 110 };
 
 /** What is drawn of a member, or of all of them together. */
 interface Series {
@@ -42,58 +46,98 @@ interface Series {
  * zero. Undefined where nothing was stacked.
  */
 export function stackFigure(result: Result): Markup | undefined {
-  const { evidence, header } = result;
+  const { evidence, findings, header } = result;
   const seen = stackSeen(evidence);
-  if (seen === undefined) return undefined;
-  const series = [
-    ...header.modules.map(({ name }, place) => member(header, seen, name, place)),
-    sum(header, seen),
-  ];
-  const points = series.flatMap(({ held, dropped }) => [...held, ...dropped]);
-  if (points.length === 0) return undefined;
-  const [, most] = extremesOf(points.map(({ x }) => x));
-  const [lowest, highest] = extremesOf(points.map(({ y }) => y));
+  if (seen === undefined || seen.climb.every(({ modules }) => modules.length === 0)) return undefined;
+  const members = header.modules.map(({ name }, place) => member(header, seen, name, place));
+  const [lowest, highest] = extremesOf(members.flatMap(drawnOf).map(({ y }) => y));
+  const along = {
+    label: 'Current of the string',
+    dimension: 'current',
+    from: 0,
+    to: furthest(members),
+  } as const;
   const goesBelow = lowest < -noticeable * highest;
   return figure(
     title,
-    pointChart({
-      id: 'stack',
-      title,
-      description: inWords(result, seen),
-      x: { label: 'Current of the string', dimension: 'current', from: 0, to: Math.max(most * 1.03, 0.1) },
-      y: { label: 'Voltage', dimension: 'voltage', ...(goesBelow ? {} : { from: 0, to: highest * 1.06 }) },
-      sorts: sortsOf(series),
-      lines: series.map(({ name, sort, held, dropped }) =>
-        lineThrough(name, rising([...held, ...dropped]), sort.look),
-      ),
-      levels: [
-        ...(goesBelow ? [{ at: 0, name: '0 V' }] : []),
-        ...(highest < comesNear * touchable ? [] : [{ at: touchable, name: `${touchable} V, touchable` }]),
-      ],
-      marks: marksOf(seen),
-      names: 'beside',
-    }),
-    caption(result, seen),
+    together(
+      pointChart({
+        id: 'stack',
+        title,
+        description: inWords(result, seen),
+        x: along,
+        y: {
+          label: 'Voltage of each',
+          dimension: 'voltage',
+          ...(!goesBelow && lowest < highest / 2 ? { from: 0 } : {}),
+        },
+        sorts: sortsOf(members),
+        lines: members.map(lineOf),
+        levels: goesBelow ? [{ at: 0, name: '0 V' }] : [],
+        marks: marksOf(seen),
+        names: 'beside',
+        size: whole,
+      }),
+      sumChart(header, seen, along),
+    ),
+    caption(seen, findings),
   );
+}
+
+function sumChart(header: RunHeader, seen: StackSeen, x: PointAxis): Markup | false {
+  const series = sum(header, seen);
+  const [, highest] = extremesOf(drawnOf(series).map(({ y }) => y));
+  if (drawnOf(series).length === 0) return false;
+  const wide = 'Sum of the voltages';
+  return pointChart({
+    id: 'stack-sum',
+    title: wide,
+    description: `${series.held.length} points held, up to ${volts(highest)}.`,
+    x,
+    y: { label: wide, dimension: 'voltage' },
+    sorts: sortsOf([series]),
+    lines: [lineOf(series)],
+    levels: highest < comesNear * touchable ? [] : [{ at: touchable, name: `${touchable} V, touch limit` }],
+    names: 'beside',
+    size: small,
+  });
+}
+
+function drawnOf({ held, dropped }: Series): readonly ChartPoint[] {
+  return [...held, ...dropped];
+}
+
+function furthest(series: readonly Series[]): Amperes {
+  const [, most] = extremesOf(series.flatMap(drawnOf).map(({ x }) => x));
+  return Math.max(most * 1.03, 0.1);
+}
+
+/** Through what was held and on to what dropped out, so that it is seen whose that is. */
+function lineOf({ name, sort, held, dropped }: Series): ChartLine {
+  const rising = [...held, ...dropped].sort((one, other) => one.x - other.x);
+  return lineThrough(name, rising, sort.look);
 }
 
 function member(header: RunHeader, { climb }: StackSeen, name: string, place: number): Series {
   const at = (look: StackLook): readonly ChartPoint[] => {
-    const there = voltagesThere(header, look).find(({ module }) => module === name);
-    if (there === undefined) return [];
-    const { volts: own, expanded } = there;
-    return [pointOf(look, own, expanded, `${name} ${volts(own)} ± ${plusMinus(expanded)}`)];
+    const read = look.modules.find(({ module }) => module === name);
+    if (read === undefined) return [];
+    const expanded = once(
+      () => voltagesThere(header, look).find(({ module }) => module === name)?.expanded ?? 0,
+    );
+    return [pointOf(look, read.volts, expanded, name)];
   };
   return { name, sort: memberLook(place), ...heldOrNot(climb, at) };
 }
 
 /** At the terminals of the whole, by the modules' own voltages: what is in series with each is taken off. */
 function sum(header: RunHeader, { climb }: StackSeen): Series {
+  const places = header.modules.length;
   const at = (look: StackLook): readonly ChartPoint[] => {
-    const top = heightsThere(header, look).at(-1);
-    if (top === undefined || !isComplete(look, header)) return [];
-    const words = `the sum ${volts(top.top)} ± ${plusMinus(top.expanded)}, read at the output ${volts(look.output)}`;
-    return [pointOf(look, top.top, top.expanded, words)];
+    if (!isComplete(look, header)) return [];
+    const expanded = once(() => heightsThere(header, look).at(-1)?.expanded ?? 0);
+    const read = `, read at the output ${volts(look.output)}`;
+    return [pointOf(look, sumUpTo(look, places), expanded, 'the sum', read)];
   };
   return { name: 'the sum', sort: { shape: 'square', look: sumLook }, ...heldOrNot(climb, at) };
 }
@@ -109,15 +153,16 @@ function heldOrNot(
   };
 }
 
-function pointOf(look: StackLook, y: Volts, expanded: Volts, words: string): ChartPoint {
+function pointOf(look: StackLook, y: Volts, expanded: () => Volts, name: string, besides = ''): ChartPoint {
   const { outcome, step } = look;
   const asked = amps(askedOf(look));
+  const where = outcome === 'dropped' ? `dropped out when ${asked} were asked for` : `at ${asked}`;
   return {
     x: askedOf(look),
     y,
-    between: () => [y - expanded, y + expanded],
+    between: () => [y - expanded(), y + expanded()],
     says: () =>
-      `${words}, ${outcome === 'dropped' ? `dropped out when ${asked} were asked for` : `at ${asked}`}; ` +
+      `${name} ${volts(y)} ± ${plusMinus(expanded())}${besides}, ${where}; ` +
       stepInWords({ step, kind: 'stack-check' }),
   };
 }
@@ -132,10 +177,6 @@ function sortsOf(series: readonly Series[]): readonly PointSort[] {
       points: series.flatMap(({ dropped }) => dropped),
     },
   ];
-}
-
-function rising(points: readonly ChartPoint[]): readonly ChartPoint[] {
-  return [...points].sort((one, other) => one.x - other.x);
 }
 
 function marksOf({ climb, collapse }: StackSeen): readonly VerticalMark[] {
@@ -164,7 +205,7 @@ function inWords({ findings, header }: Result, seen: StackSeen): string {
   ].join(' ');
 }
 
-function caption({ findings }: Result, seen: StackSeen): string {
+function caption(seen: StackSeen, findings: readonly Finding[]): string {
   const { wrong } = seen;
   return [
     ...(wrong === undefined
@@ -174,14 +215,14 @@ function caption({ findings }: Result, seen: StackSeen): string {
             `${volts(wrong.look.output)}, so nothing is told by them.`,
         ]),
     ...reversedInWords(seen),
-    'The bars hold each voltage with 95 %; of most they are smaller than the mark.',
+    'The bars hold each voltage with 95 %; below, their sum.',
   ].join(' ');
 }
 
 function reversedInWords({ reversed }: StackSeen): readonly string[] {
   return reversed.map(
     ({ module, volts: lowest, at }) =>
-      `${module} was driven below zero by the others: ${volts(lowest)} when ${amps(at)} were asked for.`,
+      `${module} was driven below zero by the others: ${formatQuantity(lowest, 'voltage', { significant: 3 })} when ${amps(at)} were asked for.`,
   );
 }
 

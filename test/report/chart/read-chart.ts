@@ -6,12 +6,20 @@ export interface ChartRead {
   /** By the name of the line; in the units of the axes. */
   readonly lines: ReadonlyMap<string, readonly Point[]>;
   readonly bands: readonly (readonly Point[])[];
-  readonly whiskers: readonly { readonly x: number; readonly low: number; readonly high: number }[];
+  readonly whiskers: readonly ReadSpan[];
+  /** What single points lie between. */
+  readonly reaches: readonly ReadSpan[];
   /** Shaded stretches of x, with what they say. */
   readonly stretches: readonly { readonly from: number; readonly to: number; readonly says: string }[];
   readonly texts: readonly string[];
   readonly title: string;
   readonly description: string;
+}
+
+interface ReadSpan {
+  readonly x: number;
+  readonly low: number;
+  readonly high: number;
 }
 
 type Point = readonly [x: number, y: number];
@@ -53,6 +61,13 @@ export function readChart(markup: Markup, id = ''): ChartRead {
         low: toY(Number(bottom)),
         high: toY(Number(top)),
       }),
+    ),
+    reaches: [...svg.matchAll(/class="reach" d="([^"]*)"/g)].flatMap(([, d = '']) =>
+      [...d.matchAll(/M(\S+) (\S+)h6m-3 0V([\d.]+)/g)].map(([, left, top, bottom]) => ({
+        x: toX(Number(left) + 3),
+        low: toY(Number(bottom)),
+        high: toY(Number(top)),
+      })),
     ),
     stretches: [
       ...svg.matchAll(/class="between" x="([^"]+)" y="[^"]+" width="([^"]+)"[^>]*><title>([^<]*)/g),
