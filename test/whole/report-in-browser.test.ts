@@ -133,16 +133,19 @@ describe.skipIf(isMissing)('the report of a run in a browser (needs /usr/bin/chr
   }
 });
 
-/** Each with its title, a description, and marks that can be seen. */
-async function hasCharts(page: Page, titles: readonly string[]): Promise<void> {
+/** Those that must be there, in their order; and each that is, with a title, a description and marks that can be seen. */
+async function hasCharts(page: Page, expected: readonly string[]): Promise<void> {
   const drawings = await page.getByRole('img').all();
-  expect(drawings).toHaveLength(titles.length);
-  for (const [index, drawing] of drawings.entries()) {
+  const titles: string[] = [];
+  for (const drawing of drawings) {
     // A number and its unit are held together on the page.
-    const title = (await drawing.locator('> title').textContent())?.replaceAll('\u00a0', ' ');
-    expect(title).toContain(titles[index]);
+    titles.push((await drawing.locator('> title').textContent())?.replaceAll('\u00a0', ' ') ?? '');
     expect((await drawing.locator('> desc').textContent())?.length).toBeGreaterThan(20);
   }
+  const found = titles.map((title) => expected.find((each) => title.startsWith(each)));
+  expect(found.filter((each) => each !== undefined)).toEqual(expected);
+  expect(titles.every((title) => title.length > 5)).toBe(true);
+  expect(drawings.length === 0).toBe(expected.length === 0);
   for (const marks of await page.evaluate<number[]>(marksOfDrawings)) expect(marks).toBeGreaterThan(2);
 }
 
