@@ -1,0 +1,162 @@
+import { existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { pathToFileURL } from 'node:url';
+import type { Browser, Page } from 'playwright-core';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { movementOf } from '../../src/judgement/movement.js';
+import type { RunHeader } from '../../src/record/run-header.js';
+import type { ComparedRecords } from '../../src/report/comparison.js';
+import { comparisonPage } from '../../src/report/comparison-page/comparison-page.js';
+import { evenly } from '../analysis/evidence-of.js';
+import { thermometerHeader, warming } from '../analysis/soak-events.js';
+import {
+  compared,
+  fourTwins,
+  header,
+  limitMoved,
+  moduleWith,
+  nothingMoved,
+} from '../report/comparison-page/made-comparisons.js';
+import { limited, soaked } from '../report/run-charts/made-results.js';
+import { nobodyShutOut, openBrowser, openWindow, patience } from '../view/page/browser.js';
+import { textsInTheWay } from './texts-in-the-way.js';
+
+const made = { program: 'railproof test', date: new Date('2026-12-02T17:00:00Z') };
+const hostile = '"><script>document.title="gone"</script><img src=x onerror=alert(1)>'.repeat(3);
+const overAll = ['How far each moved', 'Voltage over current', 'Later voltage less the earlier one'];
+
+/** A thermometer flickers; what is fitted without any scatter has a dozen idle digits. */
+const unevenly = (t: number): number => warming(t) + 0.05 * Math.sin(7 * t);
+
+/** What is compared, what the page says first, and the charts that it has before those of single findings. */
+const cases: readonly (readonly [
+  name: string,
+  records: ComparedRecords,
+  word: string,
+  charts: readonly string[],
+])[] = [
+  ['a limit that moved', limitMoved, 'Not as it should be', overAll],
+  ['nothing that changed', nothingMoved, 'As it should be', overAll],
+  ['four twins', fourTwins, 'Not as it should be', overAll],
+  [
+    'limits of two styles',
+    compared(
+      limited((voltage) => 75 / voltage, evenly(14.7, 8, 12)),
+      limited(() => 5),
+    ),
+    'Not as it should be',
+    ['How far each moved', 'Past the limit, both records'],
+  ],
+  [
+    'two procedures',
+    compared(moduleWith({}), soaked({ temperature: unevenly, until: 1080 }, thermometerHeader())),
+    'Not all can be told',
+    ['Voltage over current'],
+  ],
+];
+
+// Where chromium is missing nothing can be looked at; CI installs it, and there nothing is skipped.
+const isMissing = !existsSync('/usr/bin/chromium') && process.env['CI'] === undefined;
+
+describe.skipIf(isMissing)('the page of a comparison in a browser (needs /usr/bin/chromium)', () => {
+  let browser: Browser;
+  const folder = mkdtempSync(join(tmpdir(), 'railproof-comparisons-'));
+
+  beforeAll(async () => {
+    browser = await openBrowser();
+  }, patience);
+  afterAll(async () => {
+    await browser.close();
+    rmSync(folder, { recursive: true });
+  });
+
+  it.each(cases)(
+    'of %s opens alone, marks what moved and nothing else, for everybody and on a phone',
+    async (name, records, word, charts) => {
+      const { page, heard, close } = await opened(name, records);
+      expect(await page.locator('.word').innerText()).toBe(word);
+      const moved = records.comparison.findings.filter((one) => movementOf(one) === 'moved');
+      const single = records.comparison.findings.filter(
+        (one) =>
+          one.difference !== undefined && (movementOf(one) === 'moved' || one.verdict === 'cannot-tell'),
+      );
+      await hasCharts(page, [...charts, ...single.map(({ finding }) => finding)]);
+      const arrows = await page.locator('.shift > title').allTextContents();
+      const marked = new Set(arrows.map((says) => /^[\w-]+/.exec(says)?.[0]));
+      const drawn = moved.filter(({ difference }) => difference !== undefined);
+      expect([...marked].sort()).toEqual(drawn.map(({ finding }) => finding).sort());
+
+      expect(await textsInTheWay(page)).toEqual([]);
+      expect(await page.evaluate<string[]>(cutOff)).toEqual([]);
+      // The others have the same parts, and each look takes its seconds.
+      if (records === limitMoved) await nobodyShutOut(page);
+      await page.setViewportSize({ width: 360, height: 800 });
+      expect(await page.evaluate<number>('document.documentElement.scrollWidth')).toBe(360);
+      expect(await textsInTheWay(page)).toEqual([]);
+      await page.emulateMedia({ media: 'print' });
+      await page.setViewportSize({ width: 680, height: 994 });
+      expect(await page.evaluate<string[]>(offThePaper)).toEqual([]);
+      expect(heard).toHaveLength(1);
+      await close();
+    },
+    patience,
+  );
+
+  it(
+    'shows hostile names as texts',
+    async () => {
+      const modules = header.modules.map((module) => ({ ...module, name: hostile, description: hostile }));
+      const renamed: RunHeader = { ...header, modules, bench: { ...header.bench, name: hostile } };
+      const { page, heard, close } = await opened(
+        'hostile',
+        compared(moduleWith({}), moduleWith({ limit: 4.5 }, renamed)),
+      );
+      expect(heard).toHaveLength(1);
+      expect(await page.title()).toContain(hostile);
+      expect(await page.locator('script, img, [onload], [onerror]').count()).toBe(0);
+      expect(await textsInTheWay(page)).toEqual([]);
+      await page.setViewportSize({ width: 360, height: 800 });
+      expect(await page.evaluate<number>('document.documentElement.scrollWidth')).toBe(360);
+      await close();
+    },
+    patience,
+  );
+
+  /** The page, and all that it asked for or said. */
+  async function opened(
+    name: string,
+    records: ComparedRecords,
+  ): Promise<{ page: Page; heard: string[]; close: () => Promise<void> }> {
+    const file = join(folder, `${name}.html`);
+    writeFileSync(file, comparisonPage(records, made));
+    const { page, complaints } = await openWindow(browser, 'to-look-into');
+    page.on('request', (request) => complaints.push(request.url()));
+    await page.goto(pathToFileURL(file).href);
+    return { page, heard: complaints, close: () => page.context().close() };
+  }
+});
+
+/** Each with its title, a description, and marks that can be seen. */
+async function hasCharts(page: Page, titles: readonly string[]): Promise<void> {
+  const drawings = await page.getByRole('img').all();
+  const said = await Promise.all(drawings.map((each) => each.locator('> title').textContent()));
+  expect(said).toEqual(titles.map((title) => expect.stringContaining(title) as string));
+  for (const drawing of drawings)
+    expect((await drawing.locator('> desc').textContent())?.length).toBeGreaterThan(20);
+  for (const marks of await page.evaluate<number[]>(marksOfDrawings)) expect(marks).toBeGreaterThan(1);
+}
+
+// What runs in the page is text, as the types of a browser are none of ours.
+const marksOfDrawings = `[...document.querySelectorAll('svg[role=img]')].map((svg) =>
+  [...svg.querySelectorAll('.line, .band, .shape, .whisker, .between')].filter((mark) => {
+    const { width, height } = mark.getBoundingClientRect();
+    return width + height > 0;
+  }).length)`;
+
+const cutOff = `[...document.querySelectorAll('.wide')].filter((one) => one.scrollWidth > one.clientWidth)
+  .map((one) => one.ariaLabel + ' ' + one.scrollWidth + ' > ' + one.clientWidth)`;
+
+const offThePaper = `[...document.querySelectorAll('main, header, table, figure, svg, .standing, .code')]
+  .filter((one) => one.getBoundingClientRect().right > 681)
+  .map((one) => one.outerHTML.slice(0, 120))`;
