@@ -171,8 +171,9 @@ function freeText(pattern: RegExp, description: string, longest: number): z.ZodS
   return (
     z
       .string()
-      .trim()
+      // Before its ends are trimmed, as whoever reads the JSON Schema measures it.
       .max(longest)
+      .trim()
       // Not as a `pattern` in the JSON Schema: editors differ in which character classes they know.
       .refine((text) => pattern.test(text), {
         error: ({ input }) => `${found(input)}; control characters are not allowed here`,

@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { readQuantity } from '../quantity/parse-quantity.js';
 import { QuantityError } from '../quantity/quantity-error.js';
 import type { Dimension } from '../quantity/quantity.js';
+import { exactlyOne } from './alternatives.js';
 import { placeholderOf } from './driver-checks.js';
 import {
   errorMeanings,
@@ -59,7 +60,11 @@ type Form = keyof typeof forms;
 const formNames = Object.keys(forms) as readonly Form[];
 
 const exchange = written
-  .meta({ oneOf: formNames.map((form) => ({ required: [form, ...forms[form].must] })) })
+  .meta(
+    exactlyOne(
+      ...formNames.map((form) => ({ must: [form, ...forms[form].must], may: [...forms[form].may] })),
+    ),
+  )
   .transform((value, context): Exchange => {
     const read = readExchange(value, (path, message) => {
       context.addIssue({ code: 'custom', path, message });

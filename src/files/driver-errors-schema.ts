@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { exactlyOne } from './alternatives.js';
 import { count, quantity } from './building-blocks.js';
 import { regularExpression } from './driver-expression.js';
 import { messages, messageText } from './driver-message-schema.js';
@@ -23,6 +24,12 @@ const reported = z
     ).exactOptional(),
     afterwards: messages.default([]).describe('Sent after any other error.'),
   })
+  .meta(
+    exactlyOne(
+      { must: ['ask', 'clear'], may: ['harmless', 'again', 'afterwards'] },
+      { must: ['ask', 'error-bits'], may: ['harmless', 'again', 'afterwards'] },
+    ),
+  )
   .superRefine((value, context) => {
     if ((value.clear === undefined) !== (value['error-bits'] === undefined)) return;
     const message =
@@ -58,6 +65,14 @@ export const readySchema = z
     every: quantity('time', 'The pause before it is asked again.', { least: 0, most: 60 }).prefault('100 ms'),
     within: quantity('time', 'How long it may take in all.', { above: 0, most: 600 }).prefault('10 s'),
   })
+  .meta(
+    exactlyOne(
+      ...['when', 'bits-set', 'bits-clear'].map((sign) => ({
+        must: ['ask', sign],
+        may: ['every', 'within'],
+      })),
+    ),
+  )
   .superRefine((value, context) => {
     const given = [value.when, value['bits-set'], value['bits-clear']].filter((each) => each !== undefined);
     if (given.length === 1) return;

@@ -3,6 +3,7 @@ import { product, shifted } from '../quantity/decimal-text.js';
 import { QuantityError, readQuantity } from '../quantity/parse-quantity.js';
 import type { Dimension } from '../quantity/quantity.js';
 import { readUnit } from '../quantity/units.js';
+import { exactlyOne } from './alternatives.js';
 import { quantity, readFromText } from './building-blocks.js';
 import { ask, messages } from './driver-message-schema.js';
 import type { DriverReading, Range } from './driver.js';
@@ -48,6 +49,7 @@ export const readingSchema = z
     unit: unit.exactOptional(),
     scale: z
       .number()
+      .meta({ minimum: -1e9, maximum: 1e9, not: { const: 0 } })
       .refine((value) => value !== 0 && Math.abs(value) <= 1e9, { error: 'a number other than 0 is needed' })
       .describe(
         'What the number is multiplied by: -1 where the leads are the other way round, 100 for a shunt of 10 mΩ.',
@@ -79,6 +81,13 @@ export const readingSchema = z
       'What the reply looks like when no channel is closed, where that is no empty list: (@).',
     ).exactOptional(),
   })
+  .meta(
+    exactlyOne(
+      { must: ['ask', 'unit'], may: ['scale', 'pattern', 'ranges', 'averaging'] },
+      { must: ['ask', 'true-when'], may: ['false-when'] },
+      { must: ['ask', 'channel-in'], may: ['none-when'] },
+    ),
+  )
   .superRefine((value, context) => {
     const complain = (path: PropertyKey[], text: string): void => {
       context.addIssue({ code: 'custom', path, message: text });

@@ -1,8 +1,10 @@
+import { capitalised } from '../quantity/capitalised.js';
 import { benchSchema } from './bench-schema.js';
 import { criterionSchema } from './criterion.js';
 import { draftOf, type JsonSchema } from './draft-schema.js';
 import { driverSchema } from './driver-schema.js';
 import type { FileKind } from './file-kind.js';
+import { criterionAlternatives, toleranceAlternatives } from './finding-alternatives.js';
 import { moduleSchema } from './module-schema.js';
 import { procedureSchema } from './procedure-schema.js';
 import { stagesSchema } from './stages-schema.js';
@@ -37,68 +39,45 @@ export function jsonSchemaOf(kind: FileKind, vocabulary?: Vocabulary): JsonSchem
 }
 
 function spelledOut(schema: JsonSchema, vocabulary: Vocabulary): JsonSchema {
-  const properties = schema['properties'] as Readonly<Record<string, JsonSchema>>;
-  const steps = vocabulary.stepKinds.map(({ kind, parameters }) =>
-    stepSchema(kind, withoutDialect(draftOf(parameters))),
+  const steps = vocabulary.stepKinds.map(({ kind, summary, parameters }) =>
+    stepSchema(kind, summary, withoutDialect(draftOf(parameters))),
   );
-  return {
-    ...schema,
-    properties: {
-      ...properties,
-      steps: { ...properties['steps'], items: { oneOf: steps } },
-      criteria: { ...properties['criteria'], items: criterionOf(Object.keys(vocabulary.findings)) },
-    },
-  };
+  const criteria = criterionAlternatives(vocabulary, draftOf(criterionSchema));
+  return withItems(schema, { steps: { oneOf: steps }, criteria: { anyOf: criteria } });
 }
 
 /** A step none of whose parameters must be given may stand without any: `open-circuit:`. */
-function stepSchema(kind: string, parameters: JsonSchema): JsonSchema {
+function stepSchema(kind: string, summary: string, parameters: JsonSchema): JsonSchema {
   const { required } = parameters;
   const mayBeEmpty = !Array.isArray(required) || required.length === 0;
+  const described = { description: asSentence(summary), ...parameters };
   return {
     type: 'object',
-    properties: { [kind]: mayBeEmpty ? { anyOf: [parameters, { type: 'null' }] } : parameters },
+    properties: {
+      [kind]: mayBeEmpty
+        ? { description: described.description, anyOf: [parameters, { type: 'null' }] }
+        : described,
+    },
     required: [kind],
     additionalProperties: false,
   };
 }
 
-function criterionOf(findings: readonly string[]): JsonSchema {
-  return ofOneFinding(withoutDialect(draftOf(criterionSchema)), nameOf(findings), [
-    'at-least',
-    'at-most',
-    'is',
-  ]);
-}
-
 function withEntries(schema: JsonSchema, vocabulary: Vocabulary): JsonSchema {
+  const anyOf = toleranceAlternatives(vocabulary, draftOf(toleranceEntrySchema));
+  return withItems(schema, { findings: { anyOf } });
+}
+
+function withItems(schema: JsonSchema, items: Readonly<Record<string, JsonSchema>>): JsonSchema {
   const properties = schema['properties'] as Readonly<Record<string, JsonSchema>>;
-  const items = ofOneFinding(
-    withoutDialect(draftOf(toleranceEntrySchema)),
-    nameOf(Object.keys(vocabulary.findings)),
-    ['within', 'same', 'becomes'],
+  const lists = Object.entries(items).map(
+    ([key, each]) => [key, { ...properties[key], items: each }] as const,
   );
-  return { ...schema, properties: { ...properties, findings: { ...properties['findings'], items } } };
+  return { ...schema, properties: { ...properties, ...Object.fromEntries(lists) } };
 }
 
-/** A map that names a finding and says exactly one thing of it. */
-function ofOneFinding(
-  schema: JsonSchema,
-  anyOf: readonly JsonSchema[],
-  forms: readonly string[],
-): JsonSchema {
-  const properties = schema['properties'] as Readonly<Record<string, JsonSchema>>;
-  return {
-    ...schema,
-    properties: { ...properties, finding: { ...properties['finding'], anyOf } },
-    oneOf: forms.map((form) => ({ required: [form] })),
-  };
-}
-
-function nameOf(findings: readonly string[]): readonly JsonSchema[] {
-  const names = findings.filter((finding) => !finding.endsWith('*'));
-  const families = findings.filter((finding) => finding.endsWith('*'));
-  return [{ enum: names }, ...families.map((each) => ({ pattern: `^${each.slice(0, -1)}.` }))];
+function asSentence(words: string): string {
+  return `${capitalised(words)}.`;
 }
 
 function withoutDialect(schema: JsonSchema): JsonSchema {

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { choice, count, line, name, quantity, quantityOrWord } from './building-blocks.js';
 import { camelKeys } from './camel-keys.js';
+import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Dimension } from '../quantity/quantity.js';
 import { readingDimensions, errorDimension } from './reading-dimensions.js';
 import type { ModuleLimit, Simulation } from './simulation-section.js';
@@ -11,10 +12,13 @@ const limitCurrent = quantity('current', 'Where the limit sets in, with the modu
 const usualFoldback = 0.3;
 
 const limit = z.discriminatedUnion('style', [
-  z.strictObject({ style: z.literal('constant-current'), current: limitCurrent }),
+  z.strictObject({
+    style: z.literal('constant-current').describe('It holds the current and lets the voltage fall.'),
+    current: limitCurrent,
+  }),
   z
     .strictObject({
-      style: z.literal('foldback'),
+      style: z.literal('foldback').describe('The current falls with the voltage.'),
       current: limitCurrent,
       'short-circuit': quantity(
         'current',
@@ -34,13 +38,19 @@ const limit = z.discriminatedUnion('style', [
       current: value.current,
       shortCircuit: value['short-circuit'] ?? usualFoldback * value.current,
     })),
-  z.strictObject({ style: z.literal('constant-power'), current: limitCurrent }),
   z.strictObject({
-    style: z.literal('hiccup'),
+    style: z.literal('constant-power').describe('The current rises as the voltage falls.'),
+    current: limitCurrent,
+  }),
+  z.strictObject({
+    style: z.literal('hiccup').describe('It switches off and tries again and again.'),
     current: limitCurrent,
     period: quantity('time', 'It tries to start once in each period.', { above: 0 }).prefault('800 ms'),
   }),
-  z.strictObject({ style: z.literal('latch-off'), current: limitCurrent }),
+  z.strictObject({
+    style: z.literal('latch-off').describe('It stays off until its input is cycled.'),
+    current: limitCurrent,
+  }),
 ]);
 
 const simulatedModule = camelKeys(
@@ -92,11 +102,12 @@ const errors = Object.fromEntries([
 ]) as Record<string, ReturnType<typeof errorsIn>>;
 
 function errorsIn(unit: Dimension) {
+  const nothing = formatQuantity(0, unit);
   return z
     .strictObject({
       gain: quantity('ratio', 'Relative error.').prefault('0 %'),
-      offset: quantity(unit, 'Error at zero.').default(0),
-      resolution: quantity(unit, 'The step of the last digit.', { least: 0 }).default(0),
+      offset: quantity(unit, 'Error at zero.').prefault(nothing),
+      resolution: quantity(unit, 'The step of the last digit.', { least: 0 }).prefault(nothing),
     })
     .exactOptional();
 }

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { exactlyOne } from './alternatives.js';
 import { quantity } from './building-blocks.js';
 import { found } from './plain-words.js';
 import type { StagesContact } from './stages.js';
@@ -40,6 +41,13 @@ export const contactSchema: z.ZodType<Nameless<StagesContact>> = z
         'Whether it touches both in between (make before break), and not neither; false if left out.',
       ),
   })
+  .meta(
+    exactlyOne(
+      { must: ['makes'], may: [] },
+      { must: ['breaks'], may: [] },
+      { must: ['common', 'rest', 'driven'], may: ['bridges'] },
+    ),
+  )
   .transform((contact, context): Nameless<StagesContact> => {
     // A misspelt key has been told already.
     if (context.issues.length > 0) return z.NEVER;

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { exactlyOne } from './alternatives.js';
 import { name } from './building-blocks.js';
 import type { StagesForm } from './stages.js';
 
@@ -27,6 +28,7 @@ const partSchema: z.ZodType<Written, Written> = z
         group: partsSchema.exactOptional().describe('Side by side.'),
         stack: partsSchema.exactOptional().describe('One upon the other, the lowest first.'),
       })
+      .meta(exactlyOne({ must: ['group'], may: [] }, { must: ['stack'], may: [] }))
       .superRefine((part, context) => {
         // A misspelt key has been told already.
         if (Object.keys(part).length === 1 || context.issues.length > 0) return;

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { exactlyOne } from './alternatives.js';
 import { choice, line, name, quantity } from './building-blocks.js';
 import { headers } from './file-kind.js';
 import { found } from './plain-words.js';
@@ -22,6 +23,7 @@ const arrangement = z
       .default([])
       .describe('The contacts that are driven; all others are at rest.'),
   })
+  .meta(exactlyOne(...['module', 'group', 'stack'].map((form) => ({ must: [form], may: ['driven'] }))))
   .superRefine(({ module, group, stack }, context) => {
     // A misspelt key has been told already.
     if (context.issues.length > 0) return;

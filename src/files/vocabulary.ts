@@ -17,6 +17,8 @@ export interface Vocabulary {
 
 export interface StepKindWord {
   readonly kind: string;
+  /** What it does, in a few words. */
+  readonly summary: string;
   readonly parameters: z.ZodType;
 }
 

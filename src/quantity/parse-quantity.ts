@@ -120,7 +120,7 @@ export function readQuantityOrAnyShare(value: unknown, dimension: Dimension): Qu
 /** A regular expression, for JSON Schema, of what {@link parseQuantityOrShare} takes; `names` are what a share may refer to. */
 export function quantityOrSharePattern(
   dimension: Dimension,
-  names: readonly ReferenceName[] = referencesTo(dimension),
+  names: readonly (ReferenceName | typeof baseline)[] = referencesTo(dimension),
 ): string {
   if (names.length === 0) return quantityPattern(dimension);
   return `^${numberPattern} ?(?:${spellingsOf(dimension).join('|')}|% of (?:${names.join('|')}))$`;

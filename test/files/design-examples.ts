@@ -128,12 +128,14 @@ export const vocabulary: Vocabulary = {
   stepKinds: [
     {
       kind: 'open-circuit',
+      summary: 'what open-circuit does',
       parameters: z.strictObject({
         for: quantity('time', 'How long to watch.', { above: 0 }).prefault('5 s'),
       }),
     },
     {
       kind: 'load-ramp',
+      summary: 'what load-ramp does',
       parameters: z.strictObject({
         from: quantityOrShare('current', 'The first point.', { least: 0 }).prefault('0 A'),
         to: quantityOrShare('current', 'The last point.', { above: 0 }),
@@ -145,6 +147,7 @@ export const vocabulary: Vocabulary = {
     },
     {
       kind: 'dropout-search',
+      summary: 'what dropout-search does',
       parameters: z.strictObject({
         from: quantityOrShare('current', 'Known to hold.'),
         ceiling: quantityOrShare('current', 'Never beyond this.'),
@@ -152,7 +155,7 @@ export const vocabulary: Vocabulary = {
         sag: quantity('ratio', 'What counts as dropped.').prefault('5 %'),
       }),
     },
-    { kind: 'wait', parameters: z.strictObject({ for: quantity('time', 'How long.') }) },
+    { kind: 'wait', summary: 'what wait does', parameters: z.strictObject({ for: quantity('time', 'How long.') }) },
   ],
   findings: {
     'usable-current': 'current',
