@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { fileKinds, type FileKind } from '../../src/files/file-kind.js';
 import { jsonSchemaOf, type JsonSchema } from '../../src/files/json-schema.js';
 import { parseYaml } from '../../src/files/yaml-document.js';
+import { mismatches, undescribed, validatorOf } from '../json-schema-check.js';
 import {
   benchExample,
   driverExample,
@@ -24,16 +25,18 @@ const examples: Record<FileKind, string> = {
 
 /** A part of a file with a bare number in it, and where that stands. */
 const bareNumbers: Record<FileKind, readonly [object, string]> = {
-  module: [{ rated: { voltage: 4 } }, '/rated/voltage'],
-  bench: [{ limits: { voltage: 4 } }, '/limits/voltage'],
+  module: [{ rated: { voltage: 4, current: '4 A' } }, '/rated/voltage'],
+  bench: [{ limits: { voltage: 4, current: '8 A', power: '120 W' } }, '/limits/voltage'],
   driver: [{ ratings: { voltage: 4 } }, '/ratings/voltage'],
   procedure: [{ derating: { margin: 4 } }, '/derating/margin'],
   tolerance: [{ findings: [{ finding: 'usable-current', within: 4 }] }, '/findings/0/within'],
-  stages: [{ output: { from: 4 } }, '/output/from'],
+  stages: [{ output: { from: 4, to: '32 V' } }, '/output/from'],
 };
 
 describe.each([...fileKinds])('the schema of a %s', (kind) => {
   const schema = jsonSchemaOf(kind, vocabulary);
+  const check = validatorOf(schema);
+  const example = parseYaml(examples[kind], 'example.yaml').value as object;
 
   it('is of draft 2020-12, and has a title', () => {
     expect(schema['$schema']).toBe('https://json-schema.org/draft/2020-12/schema');
@@ -42,18 +45,20 @@ describe.each([...fileKinds])('the schema of a %s', (kind) => {
   });
 
   it('takes the example of the design', () => {
-    expect(mismatches(schema, parseYaml(examples[kind], 'example.yaml').value, '')).toEqual([]);
+    expect(mismatches(check, example)).toEqual([]);
   });
 
-  it('does not take an unknown key, or a bare number for a quantity', () => {
-    const value = parseYaml(examples[kind], 'example.yaml').value as object;
-    expect(mismatches(schema, { ...value, nonsense: 1 }, '')).toEqual(['/nonsense: not described']);
+  it('does not take an unknown key, another kind of file, or a bare number for a quantity', () => {
+    expect(mismatches(check, { ...example, nonsense: 1 })).toEqual([': must NOT have additional properties']);
+    expect(mismatches(check, { ...example, railproof: 'sonata 1' })).toEqual([
+      '/railproof: must be equal to constant',
+    ]);
     const [part, place] = bareNumbers[kind];
-    expect(mismatches(schema, { ...value, ...part }, '')).toContain(`${place}: not a string`);
+    expect(mismatches(check, { ...example, ...part })).toContain(`${place}: must be string`);
   });
 
   it('describes every key', () => {
-    expect(undescribed(schema, '')).toEqual([]);
+    expect(undescribed(schema)).toEqual([]);
   });
 });
 
@@ -63,63 +68,24 @@ it('without a vocabulary a procedure is described but for its steps', () => {
 });
 
 it('a step without parameters that must be given may stand alone', () => {
-  const schema = jsonSchemaOf('procedure', vocabulary);
+  const check = validatorOf(jsonSchemaOf('procedure', vocabulary));
   const file = { railproof: 'procedure 1', name: 'x', title: 'X' };
-  expect(mismatches(schema, { ...file, steps: [{ 'open-circuit': null }] }, '')).toEqual([]);
-  expect(mismatches(schema, { ...file, steps: [{ wait: null }] }, '')).not.toEqual([]);
-  expect(mismatches(schema, { ...file, steps: [{ soak: {} }] }, '')).not.toEqual([]);
+  expect(mismatches(check, { ...file, steps: [{ 'open-circuit': null }] })).toEqual([]);
+  expect(mismatches(check, { ...file, steps: [{ wait: null }] })).not.toEqual([]);
+  expect(mismatches(check, { ...file, steps: [{ soak: {} }] })).not.toEqual([]);
 });
 
-/** A light check of a value by the keywords that our schemas use; every mismatch with its place. */
-function mismatches(schema: JsonSchema, value: unknown, at: string): string[] {
-  const alternatives = (schema['oneOf'] ?? schema['anyOf']) as JsonSchema[] | undefined;
-  if (alternatives !== undefined && !alternatives.some((each) => mismatches(each, value, at).length === 0)) {
-    return [`${at}: none of the alternatives`];
-  }
-  const type = schema['type'];
-  if (type === 'null') return value === null ? [] : [`${at}: not null`];
-  if (type === 'string') return stringMismatches(schema, value, at);
-  if (type === 'integer') return Number.isInteger(value) ? [] : [`${at}: not a whole number`];
-  if (type === 'boolean') return typeof value === 'boolean' ? [] : [`${at}: not true or false`];
-  if (type === 'array') {
-    if (!Array.isArray(value)) return [`${at}: not a list`];
-    return value.flatMap((each, index) => mismatches(schema['items'] as JsonSchema, each, `${at}/${index}`));
-  }
-  if (typeof value !== 'object' || value === null) return type === 'object' ? [`${at}: not a map`] : [];
-  const properties = (schema['properties'] ?? {}) as Record<string, JsonSchema>;
-  const required = (schema['required'] ?? []) as string[];
-  return [
-    ...required.filter((key) => !Object.hasOwn(value, key)).map((key) => `${at}/${key}: missing`),
-    ...Object.entries(value).flatMap(([key, each]) => {
-      const described = properties[key];
-      if (described !== undefined) return mismatches(described, each, `${at}/${key}`);
-      return schema['additionalProperties'] === false ? [`${at}/${key}: not described`] : [];
-    }),
-  ];
-}
-
-function stringMismatches(schema: JsonSchema, value: unknown, at: string): string[] {
-  if (typeof value !== 'string') return [`${at}: not a string`];
-  const {
-    pattern,
-    enum: allowed,
-    const: only,
-  } = schema as { pattern?: string; enum?: string[]; const?: string };
-  if (pattern !== undefined && !new RegExp(pattern, 'u').test(value)) return [`${at}: not of the pattern`];
-  if (allowed?.includes(value) === false) return [`${at}: not among the words`];
-  return only === undefined || only === value ? [] : [`${at}: not the word`];
-}
-
-function undescribed(schema: JsonSchema, at: string): string[] {
-  const properties = Object.entries((schema['properties'] ?? {}) as Record<string, JsonSchema>);
-  const inner = [schema['items'], ...((schema['oneOf'] ?? schema['anyOf'] ?? []) as unknown[])];
-  return [
-    ...properties.flatMap(([key, each]) => [
-      ...(each['description'] === undefined && !('const' in each) && !at.endsWith('(steps)')
-        ? [`${at}/${key}`]
-        : []),
-      ...undescribed(each, `${at}/${key}${key === 'steps' ? '(steps)' : ''}`),
-    ]),
-    ...inner.filter((each) => each !== undefined).flatMap((each) => undescribed(each as JsonSchema, at)),
-  ];
-}
+it('what may be asked of a finding goes by what it measures', () => {
+  const check = validatorOf(jsonSchemaOf('procedure', vocabulary));
+  const asks = (criterion: object): readonly string[] =>
+    mismatches(check, {
+      ...{ railproof: 'procedure 1', name: 'x', title: 'X', steps: [{ 'open-circuit': null }] },
+      criteria: [criterion],
+    });
+  expect(asks({ finding: 'usable-current', 'at-least': '4 A' })).toEqual([]);
+  expect(asks({ finding: 'usable-current', 'at-least': '120 % of baseline' })).toEqual([]);
+  expect(asks({ finding: 'usable-current', 'at-least': '4 V' })).not.toEqual([]);
+  expect(asks({ finding: 'usable-current', is: 'plenty' })).not.toEqual([]);
+  expect(asks({ finding: 'usable-current', 'at-least': '4 A', 'at-most': '5 A' })).not.toEqual([]);
+  expect(asks({ finding: 'usable-currant', 'at-least': '4 A' })).not.toEqual([]);
+});
