@@ -11,7 +11,7 @@ import type { ChartLine } from '../chart/drawn-line.js';
 import type { VerticalMark } from '../chart/marks.js';
 import { type ChartPoint, type Level, pointChart, type PointSort } from '../chart/point-chart.js';
 import type { Markup } from '../page/markup.js';
-import type { Result } from '../result.js';
+import { isWhole, type Result } from '../result.js';
 import { figure } from '../sheet/figure.js';
 import { droppedPoints, heldSorts, idleSort } from './curve-points.js';
 import { amps, foundInWords, volts } from './in-words.js';
@@ -116,7 +116,8 @@ function fitted(line: RegulationLine, from: Amperes, to: Amperes): ChartLine {
   };
 }
 
-function currentMarks({ findings }: Result, { bracket }: CurveSeen): readonly VerticalMark[] {
+function currentMarks(result: Result, { bracket }: CurveSeen): readonly VerticalMark[] {
+  const { findings } = result;
   const mark = (name: string, label: (value: Amperes) => string): readonly VerticalMark[] => {
     const finding = findingNamed(findings, name);
     if (finding === undefined || typeof finding.value !== 'number') return [];
@@ -128,7 +129,10 @@ function currentMarks({ findings }: Result, { bracket }: CurveSeen): readonly Ve
     onset === undefined ? each : { ...each, between: { from: onset[0], to: onset[1], only: false } },
   );
   return [
-    ...mark('recommended-current', (value) => `recommended ${roundedDown(value, 'current')}`),
+    // Of a test that was not finished nothing that looks like a recommendation is shown.
+    ...(isWhole(result)
+      ? mark('recommended-current', (value) => `recommended ${roundedDown(value, 'current')}`)
+      : []),
     ...mark(
       'usable-current',
       (value) => `usable ${usable?.bound === 'least' ? 'at least ' : ''}${amps(value)}`,
@@ -147,11 +151,8 @@ function currentMarks({ findings }: Result, { bracket }: CurveSeen): readonly Ve
   ];
 }
 
-function inWords(
-  { findings, header }: Result,
-  seen: CurveSeen,
-  held: readonly PointSort[],
-): readonly string[] {
+function inWords(result: Result, seen: CurveSeen, held: readonly PointSort[]): readonly string[] {
+  const { findings, header } = result;
   const counted = held
     .filter(({ points }) => points.length > 0)
     .map(({ name, points }) => `${points.length} ${name}`);
@@ -173,7 +174,9 @@ function inWords(
     ...found('usable-current', 'Usable:'),
     ...(() => {
       const value = findingNamed(findings, 'recommended-current')?.value;
-      return typeof value === 'number' ? [`Recommended: ${roundedDown(value, 'current')}.`] : [];
+      return typeof value === 'number' && isWhole(result)
+        ? [`Recommended: ${roundedDown(value, 'current')}.`]
+        : [];
     })(),
     `The label says ${asGiven(plate.voltage, 'voltage')} and ${asGiven(plate.current, 'current')}.`,
   ];

@@ -132,6 +132,14 @@ describe('the curve of a record that holds little', () => {
     expect(description).not.toMatch(/NaN|undefined/);
   });
 
+  it('recommends nothing where the test was not finished', () => {
+    const unfinished = resultOf(eventsOf([idle, upAndBack, search], false), headerOf());
+    expect(findingNamed(unfinished.findings, 'recommended-current')?.value).toBeGreaterThan(0);
+    const { texts, description } = read(unfinished);
+    expect(plain([...texts, description]).some((text) => /recommended/i.test(text))).toBe(false);
+    expect(plain(texts).some((text) => text.startsWith('usable'))).toBe(true);
+  });
+
   it('is that of the whole where several modules were joined, and draws no line', () => {
     const header = headerOf();
     const [K1] = header.modules;

@@ -134,6 +134,16 @@ describe('the shares of a group', () => {
   });
 });
 
+describe('the recommendation among the shares', () => {
+  it('is shown where the test was finished, and not where it was broken off', () => {
+    const result = shared(drawer(2), evenly(0.8, 8, 10));
+    const isThere = (of: Result): boolean => read(of).texts.some((text) => text.startsWith('recommended'));
+    expect(isThere(result)).toBe(true);
+    const torn = { kind: 'cut-off', lines: 0, bytes: 0, tornBytes: 0 } as const;
+    expect(isThere({ ...result, integrity: torn })).toBe(false);
+  });
+});
+
 describe('the shares of a record that holds little, or very much', () => {
   it('are not there where nothing is shared, or where the currents do not add up', () => {
     expect(sharesFigure(resultOf())).toBeUndefined();
