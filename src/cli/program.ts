@@ -6,6 +6,8 @@ import type { CombineOptions } from './combine.js';
 import type { CompareOptions } from './compare.js';
 import type { DriversOptions } from './drivers.js';
 import { errorText } from './error-text.js';
+import { exitStatusList } from './exit-status-words.js';
+import { helpItem } from './help-item.js';
 import { packageFacts, troubleshootingPage } from './package-facts.js';
 import type { ReportOptions } from './report.js';
 import type { RunOptions } from './run-wanted.js';
@@ -45,7 +47,8 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     })
     .showHelpAfterError('(railproof help <command> shows examples)')
     .addHelpText('after', firstSteps)
-    .addHelpText('after', exitStatusHelp);
+    .configureHelp({ formatItem: helpItem })
+    .addHelpText('after', () => exitStatusList(Math.min(streams.stdout.columns || 80, 80)));
 
   const command = (usage: string, description: string, example: string): Command =>
     program
@@ -315,19 +318,4 @@ To begin:
 
 What puzzles you at the bench, by what you see:
   ${troubleshootingPage()}
-`;
-
-const exitStatusHelp = `
-Exit status:
-   0  conforms, or nothing to judge, or may be built
-   1  does not conform, or changed, or must not be built, or is
-      recommended for less than the load asked for
-   2  undecided, or nobody can tell
-   3  stopped by a guard or by the operator
-  64  usage
-  65  bad file
-  66  missing file
-  69  instrument unreachable or lost, or the load not confirmed to be off
-  70  a fault of ours
-  74  the record or the output could not be written
 `;
