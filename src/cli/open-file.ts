@@ -1,4 +1,4 @@
-import { spawn } from 'node:child_process';
+import { type ChildProcess, spawn } from 'node:child_process';
 import { resolve } from 'node:path';
 import { messageOf } from '../errors/message-of.js';
 import { printable } from '../quantity/printable.js';
@@ -21,11 +21,12 @@ const patience = 2000;
  */
 export async function openFile(path: string, environment: NodeJS.ProcessEnv): Promise<string | undefined> {
   const [program, ...before] = openers[process.platform] ?? elsewhere;
-  const child = spawn(program, [...before, resolve(path)], {
-    detached: true,
-    stdio: 'ignore',
-    env: environment,
-  });
+  let child: ChildProcess;
+  try {
+    child = spawn(program, [...before, resolve(path)], { detached: true, stdio: 'ignore', env: environment });
+  } catch (error) {
+    return `the page could not be opened: ${messageOf(error)}`;
+  }
   return new Promise((done) => {
     const timer = setTimeout(() => {
       child.unref();

@@ -2,6 +2,7 @@ import type { Performed } from '../run/perform.js';
 
 /** Whether something is off, in words. */
 export interface SafetyWords {
+  readonly what: 'load' | 'source';
   readonly confirmed: boolean;
   readonly text: string;
 }
@@ -12,16 +13,16 @@ export function safetyWords({
   sourceSafety,
 }: Pick<Performed, 'safety' | 'sourceSafety'>): readonly SafetyWords[] {
   const each = [
-    { what: 'load', safety },
-    ...(sourceSafety === undefined ? [] : [{ what: 'source', safety: sourceSafety }]),
+    { what: 'load' as const, safety },
+    ...(sourceSafety === undefined ? [] : [{ what: 'source' as const, safety: sourceSafety }]),
   ];
   const off = each.flatMap(({ what, safety }) =>
-    safety.kind === 'confirmed' ? [{ confirmed: true, text: `The ${what} is off; it was read back.` }] : [],
+    safety.kind === 'confirmed' ? [{ what, confirmed: true, text: `The ${what} is off; it was read back.` }] : [],
   );
   const unsure = each.reverse().flatMap(({ what, safety }) => {
     if (safety.kind === 'confirmed') return [];
     const text = `It could not be confirmed that the ${what} is off: ${safety.why}\n${safety.advice}`;
-    return [{ confirmed: false, text }];
+    return [{ what, confirmed: false, text }];
   });
   return [...off, ...unsure];
 }

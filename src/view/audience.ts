@@ -14,8 +14,11 @@ export interface Times {
 
 /** Eight a second: more than an eye reads, and a small cost. */
 const figuresEvery: Seconds = 0.125;
-/** A bench has a few people, and each a few windows. */
-const mostPages = 16;
+/**
+ * A browser keeps six lines to one address and no more, and each page holds one of them: with six pages in it no wish
+ * to stop would leave it. One is kept for the wish, one for a page that tries again.
+ */
+const mostPages = 4;
 
 /** Those who follow the run, and the state that each of them has by the same rule. */
 export class Audience {

@@ -93,8 +93,12 @@ export interface ViewedEnd {
   readonly answer: readonly string[];
   readonly outcome: 'conforms' | 'does-not-conform' | 'undecided' | 'not-judged';
   /** Whether load and source are off, in words; and what to do by hand where that could not be confirmed. */
-  readonly safety: readonly { readonly confirmed: boolean; readonly text: string }[];
-  /** The record's folder. */
+  readonly safety: readonly {
+    readonly what: 'load' | 'source';
+    readonly confirmed: boolean;
+    readonly text: string;
+  }[];
+  /** The record's folder; empty where none was begun. */
   readonly record: string;
 }
 

@@ -199,9 +199,9 @@ describe('a page that is in', () => {
     expect(seen.stop).not.toHaveBeenCalled();
   });
 
-  it('is followed by sixteen at once and no more, until one of them leaves', async () => {
+  it('is followed by four pages at once, so that a browser has lines left to stop it by, and no more, until one of them leaves', async () => {
     const pages: Follower[] = [];
-    for (let count = 0; count < 16; count += 1) pages.push(await follow(seen.port, cookie));
+    for (let count = 0; count < 4; count += 1) pages.push(await follow(seen.port, cookie));
     const { status, text } = await get('/events');
     expect([status, text]).toEqual([503, 'Too many pages follow this run.\n']);
     pages.pop()?.breakOff();

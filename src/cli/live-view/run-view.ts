@@ -58,7 +58,8 @@ export async function openRunView(
     times: () => counted && { elapsed: counted.elapsed, remaining: counted.left },
     random: randomBytes,
     stop: () => {
-      stop.wish('stopped in the live view');
+      // A second page, or a wish sent again, is no second wish: what is under way is not broken off by it.
+      if (!stop.signal.aborted) stop.wish('stopped in the live view');
     },
     addressed: (address) => {
       stderr.write('\nThe address of the live view was shown again without what it was opened with.\n');

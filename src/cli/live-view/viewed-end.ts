@@ -1,4 +1,7 @@
+import { FoundOnError } from '../../bench/found-on.js';
 import { messageOf } from '../../errors/message-of.js';
+import { RailproofError } from '../../errors/railproof-error.js';
+import { capitalised } from '../../quantity/capitalised.js';
 import { answer } from '../../report/answer.js';
 import type { ViewedEnd } from '../../view/view-state.js';
 import type { PlanPerformed } from '../perform-plan.js';
@@ -21,14 +24,16 @@ export function viewedEnd(performed: PlanPerformed): ViewedEnd {
   };
 }
 
-/** One that did not come to a record: the bench could not be opened, say, and nothing was switched on. */
+/** One that did not come to a record: the bench could not be opened, say. We switched nothing on; whoever was before us may have. */
 export function notBegun(error: unknown): ViewedEnd {
+  const advice = error instanceof RailproofError ? error.advice : undefined;
+  const isOn = error instanceof FoundOnError;
   return {
     how: 'failed',
     reason: messageOf(error),
-    answer: [],
+    answer: advice === undefined || isOn ? [] : [capitalised(advice)],
     outcome: 'not-judged',
-    safety: [],
+    safety: isOn ? [{ what: 'load', confirmed: false, text: capitalised(advice ?? '') }] : [],
     record: '',
   };
 }

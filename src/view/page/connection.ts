@@ -44,7 +44,10 @@ export function follow(told: (message: ViewMessage) => void, changed: () => void
     const asked = now();
     try {
       const { status } = await fetch('/look.css', { cache: 'no-store' });
-      if (heard === undefined || heard < asked) why = status === 403 ? 'refused' : 'silent';
+      // A line that was refused is closed; one that was cut is tried again.
+      const isClosed = stream.readyState === EventSource.CLOSED;
+      if (heard === undefined || heard < asked)
+        why = status === 403 ? 'refused' : status === 200 && isClosed ? 'full' : 'silent';
     } catch {
       if (heard === undefined || heard < asked) why = 'unreachable';
     }

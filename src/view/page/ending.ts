@@ -45,6 +45,6 @@ function words({ how, reason, answer, safety, record }: ViewedEnd): readonly HTM
       : []),
     ...safe.map(({ text }) => made('p', { class: 'safety' }, text)),
     ...answer.map((line) => made('p', {}, line)),
-    made('p', {}, 'Record: ', made('span', { class: 'folder' }, record)),
+    ...(record === '' ? [] : [made('p', {}, 'Record: ', made('span', { class: 'folder' }, record))]),
   ];
 }

@@ -1,7 +1,7 @@
 import type { ViewState } from '../view-state.js';
 import { drawn, place, whenChanged, write } from './dom.js';
 import type { Line } from './silence.js';
-import { lineWords, loadWords } from './wording.js';
+import { lineWords, loadLeft, loadWords } from './wording.js';
 
 type Contact = 'closed' | 'open' | 'unknown';
 
@@ -24,7 +24,7 @@ export function showLoad(state: ViewState | undefined, line: Line): void {
   write(place('load-word'), loadWords(state, line));
   write(place('line'), lineWords(line));
   place('load').classList.toggle('silent', line.kind === 'lost');
-  const known = line.kind === 'live' || line.kind === 'over' ? state?.input : undefined;
+  const known = line.kind === 'live' || line.kind === 'over' ? loadLeft(state) : undefined;
   place('load').classList.toggle('on', known === 'on');
-  draw(known === undefined ? 'unknown' : known === 'on' ? 'closed' : 'open');
+  draw(known === undefined || known === 'unsure' ? 'unknown' : known === 'on' ? 'closed' : 'open');
 }

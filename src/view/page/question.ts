@@ -15,7 +15,9 @@ let open: Question | undefined;
 /** The question that was answered here. */
 let ours: number | undefined;
 /** What was last typed here, and to what; the runner asks the same again where it did not understand. */
-let typedHere: { readonly heading: string; readonly text: string } | undefined;
+let typedHere: { readonly heading: string; readonly step: number; readonly text: string } | undefined;
+/** The step in which the open question is asked. */
+let askedIn = 0;
 let sending = false;
 /** The step in which the last question was answered; with it goes what was said of that. */
 let answeredIn = 0;
@@ -27,6 +29,7 @@ export function showQuestion({ question, stopping, ended, step }: ViewState): vo
   const before = open;
   const wasHere = section.contains(document.activeElement);
   open = question;
+  askedIn = step;
   sending = false;
   show(section, question !== undefined);
   if (before !== undefined) {
@@ -37,7 +40,8 @@ export function showQuestion({ question, stopping, ended, step }: ViewState): vo
     if (wasHere && ended === undefined) place('module').focus();
     return;
   }
-  const isAgain = typedHere?.heading === question.heading;
+  // Another step may ask under the same name, and what was read for the one is no answer to the other.
+  const isAgain = typedHere?.heading === question.heading && typedHere.step === step;
   lay(question);
   if (before === undefined) show(answered, false);
   if (isAgain) correct(question, typedHere?.text ?? '');
@@ -136,7 +140,7 @@ function input(): HTMLInputElement | null {
 async function answer(question: Question, given: string): Promise<void> {
   sending = true;
   ours = question.id;
-  typedHere = input() === null ? undefined : { heading: question.heading, text: given };
+  typedHere = input() === null ? undefined : { heading: question.heading, step: askedIn, text: given };
   const { sent, words } = await send('/answer', { question: question.id, answer: given });
   if (open?.id !== question.id) return;
   sending = false;

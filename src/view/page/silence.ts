@@ -1,8 +1,11 @@
 /** After this many seconds without a word, of which there is one each second, the runner counts as lost. */
 export const patience = 3;
 
-/** Why nothing comes: the line is open and silent; nobody answers at the address; who answers does not know this page. */
-export type Why = 'silent' | 'unreachable' | 'refused';
+/**
+ * Why nothing comes: the line is open and silent; nobody answers at the address; who answers does not know this page,
+ * or has enough pages.
+ */
+export type Why = 'silent' | 'unreachable' | 'refused' | 'full';
 
 /** How the page stands with the runner. */
 export type Line =
@@ -24,6 +27,7 @@ export interface Hearing {
 export function lineOf({ since, heard, why, ended }: Hearing, now: number): Line {
   if (ended) return { kind: 'over' };
   const seconds = now - (heard ?? since);
-  if (seconds > patience || (why === 'refused' && heard === undefined)) return { kind: 'lost', seconds, why };
+  if (seconds > patience || ((why === 'refused' || why === 'full') && heard === undefined))
+    return { kind: 'lost', seconds, why };
   return { kind: heard === undefined ? 'connecting' : 'live' };
 }

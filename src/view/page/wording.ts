@@ -23,7 +23,7 @@ export function lostWords(line: Line & { readonly kind: 'lost' }, known: boolean
     'The load may still be on. Look at the terminal.',
     ...(known ? ['What stands below is old.'] : []),
     ...reasons[line.why],
-    'The watchman switches the load off when the runner is gone. If in doubt cut the power by hand.',
+    'A watchman at the runner tries to switch the load off when the runner is gone; do not rely on it. If in doubt cut the power by hand.',
     ...(line.why === 'refused'
       ? []
       : ['This page goes on trying, and shows what is so as soon as it hears.']),
@@ -32,6 +32,7 @@ export function lostWords(line: Line & { readonly kind: 'lost' }, known: boolean
 
 const reasons: Readonly<Record<(Line & { kind: 'lost' })['why'], readonly string[]>> = {
   silent: [],
+  full: ['Too many pages follow this run. Close one of them.'],
   unreachable: ['Nobody answers at this address: the program has ended, or the way to it is cut.'],
   refused: [
     'Who answers at this address does not know this page. Open the address again that the terminal shows; it opens one page once.',
@@ -61,11 +62,20 @@ export function ageWords(
   return seconds < 2 ? { text: 'Read just now.', old: false } : { text: `Read ${age}.`, old: seconds >= 10 };
 }
 
-/** The load's input in words; `undefined` where nobody knows. */
+/**
+ * The load's input: while it runs by what was last read back; once it is over by what the runner could confirm, as
+ * a load that no longer answers may be on whatever it said before.
+ */
+export function loadLeft(state: ViewState | undefined): 'on' | 'off' | 'unsure' | undefined {
+  const end = state?.ended?.safety.find(({ what }) => what === 'load');
+  if (end === undefined) return state?.input;
+  return end.confirmed ? 'off' : 'unsure';
+}
+
+/** The same in words. */
 export function loadWords(state: ViewState | undefined, line: Line): string {
-  const input = state?.input;
-  if (state?.ended?.safety.some(({ confirmed }) => !confirmed) === true && input !== 'off')
-    return 'Load may still be on';
+  const input = loadLeft(state);
+  if (input === 'unsure') return 'Load may still be on';
   if (input === undefined) return 'Load not read yet';
   return line.kind === 'lost' ? `Load last read ${input}` : `Load ${input}`;
 }
@@ -79,8 +89,11 @@ export function timesWords({ elapsed, remaining, ended }: ViewState): string {
 export type StepStanding = 'done' | 'now' | 'to-come' | 'broken-off' | 'not-done';
 
 /** Where a step stands, counted from 1. */
-export function standingOf(number: number, { step, ended }: Pick<ViewState, 'step' | 'ended'>): StepStanding {
-  if (ended?.how === 'completed' || number < step) return 'done';
+export function standingOf(
+  number: number,
+  { step, ended, run: { done = 0 } }: Pick<ViewState, 'step' | 'ended' | 'run'>,
+): StepStanding {
+  if (ended?.how === 'completed' || number < step || number <= done) return 'done';
   if (number === step) return ended === undefined ? 'now' : 'broken-off';
   return ended === undefined ? 'to-come' : 'not-done';
 }
@@ -98,10 +111,14 @@ export function stepWords({ step, run, ended }: ViewState): string {
   const count = run.steps.length;
   const now = run.steps[step - 1];
   if (ended !== undefined)
-    return ended.how === 'completed' ? `All ${count} steps are done.` : `Ended in step ${step} of ${count}.`;
+    return ended.how === 'completed' ? `All ${count} steps are done.` : endedIn(step, count);
   return now === undefined
     ? `Before the first of ${count} steps.`
     : `Step ${step} of ${count}: ${now.summary}`;
+}
+
+function endedIn(step: number, count: number): string {
+  return step === 0 ? `Ended before the first of ${count} steps.` : `Ended in step ${step} of ${count}.`;
 }
 
 export function cautionWords({ by }: Pick<ViewedCaution, 'by'>): string {

@@ -1,11 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import { notBegun, viewedEnd } from '../../../src/cli/live-view/viewed-end.js';
 import type { PlanPerformed } from '../../../src/cli/perform-plan.js';
+import { FoundOnError } from '../../../src/bench/found-on.js';
 import { loadMayStillBeOn } from '../../../src/bench/make-safe.js';
 import { runFolderAt } from '../../../src/record/run-folder.js';
 import { answer } from '../../../src/report/answer.js';
 import { understand } from '../../../src/report/understand.js';
-import { StoppedByOperator } from '../../../src/run/stopped.js';
+import { OperatorAbsentError, StoppedByOperator } from '../../../src/run/stopped.js';
 
 const path = 'fixtures/runs/20261130T091500Z-K1-real-limit';
 const result = understand(path);
@@ -25,7 +26,7 @@ describe('the end of a run on a page', () => {
       reason: null,
       answer: answer(result),
       outcome: result.outcome,
-      safety: [{ confirmed: true, text: 'The load is off; it was read back.' }],
+      safety: [{ what: 'load', confirmed: true, text: 'The load is off; it was read back.' }],
       record: path,
     });
     expect(answer(result)[0]).toMatch(/^Load it continuously/);
@@ -47,7 +48,7 @@ describe('the end of a run on a page', () => {
       advice: loadMayStillBeOn,
     } as const;
     const [words] = viewedEnd({ ...completed, safety }).safety;
-    expect(words).toMatchObject({ confirmed: false });
+    expect(words).toMatchObject({ what: 'load', confirmed: false });
     expect(words?.text).toContain('THE LOAD MAY STILL BE ON');
     expect(words?.text).toContain('the load does not answer');
   });
@@ -70,5 +71,22 @@ describe('the end of a run on a page', () => {
       safety: [],
       record: '',
     });
+  });
+
+  it('of a run that did not begin says what to do next', () => {
+    expect(notBegun(new OperatorAbsentError(['its wiring'])).answer).toEqual([
+      expect.stringMatching(/^Run it in a terminal/),
+    ]);
+  });
+
+  it('sends whoever finds the load on to it', () => {
+    const found = new FoundOnError('tcp://127.0.0.1:9', new OperatorAbsentError(['its wiring']));
+    expect(notBegun(found).safety).toEqual([
+      {
+        what: 'load',
+        confirmed: false,
+        text: expect.stringContaining('`railproof safe` switches it off') as string,
+      },
+    ]);
   });
 });

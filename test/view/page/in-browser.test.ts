@@ -104,6 +104,19 @@ describe('what is asked', () => {
     expect(reached).toEqual(['Yes, go on', 'No, stop here', 'The last points as a table', 'points']);
   });
 
+  it('of another step is not filled in with what was read for the one before', async () => {
+    const { view, page } = await viewed({ step: 1 });
+    const first = view.ask(warmth, never);
+    await page.getByLabel('Your answer').fill('23.5 degC');
+    await page.keyboard.press('Enter');
+    expect(await first).toBe('23.5 degC');
+    view.show({ kind: 'step', step: 2, elapsed: 20, remaining: 10 });
+    view.ask(warmth, never).catch(() => undefined);
+    await page.getByLabel('Your answer').waitFor();
+    expect(await page.getByLabel('Your answer').inputValue()).toBe('');
+    expect(await atKeyboard(page)).toBe('question-heading');
+  });
+
   it('keeps what is being typed while the figures come, and says why an answer can not be taken', async () => {
     const { view, page } = await viewed({ step: 1 });
     const answer = view.ask(warmth, never);
@@ -370,12 +383,15 @@ const completed: ViewedEnd = {
   reason: null,
   answer: ['Load it continuously with up to 3.18 A.'],
   outcome: 'conforms',
-  safety: [{ confirmed: true, text: 'The load is off; it was read back.' }],
+  safety: [{ what: 'load', confirmed: true, text: 'The load is off; it was read back.' }],
   record: 'runs/20261202T120000Z-K1-quick-look',
 };
 
 describe('at the end', () => {
-  const unsafe = { confirmed: false, text: 'Whether the load is off could not be read back: cut the power.' };
+  const unsafe = {
+    ...{ what: 'load', confirmed: false },
+    text: 'Whether the load is off could not be read back: cut the power.',
+  } as const;
   const ends: readonly [string, Partial<ViewedEnd>][] = [
     ['Conforms', {}],
     ['Does not conform', { outcome: 'does-not-conform' }],

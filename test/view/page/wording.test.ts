@@ -25,10 +25,13 @@ const ended: ViewedEnd = {
   reason: null,
   answer: [],
   outcome: 'conforms',
-  safety: [{ confirmed: true, text: 'The load is off; it was read back.' }],
+  safety: [{ what: 'load', confirmed: true, text: 'The load is off; it was read back.' }],
   record: 'runs/one',
 };
-const unsafe = { ...ended, safety: [{ confirmed: false, text: 'It could not be confirmed.' }] };
+const unsafe: ViewedEnd = {
+  ...ended,
+  safety: [{ what: 'load', confirmed: false, text: 'It could not be confirmed.' }],
+};
 
 describe('of a lost runner the page says', () => {
   it('for how long nothing was heard, that all is old, that the load may be on, and what to do', () => {
@@ -81,7 +84,18 @@ describe('the load', () => {
   });
 
   it('may still be on where the end could not confirm that it is off', () => {
-    expect(loadWords({ ...before, input: 'on', ended: unsafe }, over)).toBe('Load may still be on');
+    for (const input of ['on', 'off', undefined] as const)
+      expect(loadWords({ ...before, input, ended: unsafe }, over)).toBe('Load may still be on');
+  });
+
+  it('is off where the end read that back, whatever was heard before', () => {
+    expect(loadWords({ ...before, input: 'on', ended }, over)).toBe('Load off');
+  });
+
+  it('is off also where only the source could not be confirmed', () => {
+    const source = { what: 'source', confirmed: false, text: 'It could not be confirmed.' } as const;
+    const safety = [...ended.safety, source];
+    expect(loadWords({ ...before, input: 'off', ended: { ...ended, safety } }, over)).toBe('Load off');
   });
 });
 
@@ -97,7 +111,16 @@ describe('the steps', () => {
     const stopped = { ...before, step: 1, ended: { ...ended, how: 'stopped' as const } };
     expect([1, 2].map((number) => standingOf(number, stopped))).toEqual(['broken-off', 'not-done']);
     expect(stepWords(stopped)).toBe('Ended in step 1 of 2.');
-    expect([1, 2].map((number) => standingOf(number, { step: 2, ended }))).toEqual(['done', 'done']);
+    expect(stepWords({ ...stopped, step: 0 })).toBe('Ended before the first of 2 steps.');
+    expect([1, 2].map((number) => standingOf(number, { ...before, step: 2, ended }))).toEqual([
+      'done',
+      'done',
+    ]);
+  });
+
+  it('that an earlier run did are done from the beginning', () => {
+    const goesOn = { ...before, run: { ...before.run, done: 1 } };
+    expect([1, 2].map((number) => standingOf(number, goesOn))).toEqual(['done', 'to-come']);
   });
 
   it('say what has gone and about what remains', () => {
