@@ -26,5 +26,5 @@ export function exitStatusList(width: number): string {
       .map((line, index) => `${index === 0 ? status : '    '}  ${line}`)
       .join('\n');
   });
-  return `\nExit status:\n${lines.join('\n')}\n`;
+  return `Exit status:\n${lines.join('\n')}`;
 }

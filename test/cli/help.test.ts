@@ -19,6 +19,7 @@ const commands = [
   'safe',
   'runs',
   'schema',
+  'completion',
 ];
 
 afterAll(() => {
