@@ -17,7 +17,9 @@ export function safetyWords({
     ...(sourceSafety === undefined ? [] : [{ what: 'source' as const, safety: sourceSafety }]),
   ];
   const off = each.flatMap(({ what, safety }) =>
-    safety.kind === 'confirmed' ? [{ what, confirmed: true, text: `The ${what} is off; it was read back.` }] : [],
+    safety.kind === 'confirmed'
+      ? [{ what, confirmed: true, text: `The ${what} is off; it was read back.` }]
+      : [],
   );
   const unsure = each.reverse().flatMap(({ what, safety }) => {
     if (safety.kind === 'confirmed') return [];
