@@ -18,6 +18,8 @@ import { amps, foundInWords, volts } from './in-words.js';
 /** A constant power is one within a tenth, from the lowest to the highest: half of it to each side. */
 const side = 0.05;
 const places = 61;
+/** Of overloads alone there is little to see between no voltage and all of it. */
+const flat = { height: 130, left: 12, right: 0 };
 
 /**
  * V against I past the limit, at constant voltage and under the overloads of a search. Undefined where neither was
@@ -49,6 +51,7 @@ export function limitTraceFigure({ evidence, findings }: Result): Markup | undef
       lines: [...regulated, ...(power === undefined ? [] : [hyperbola(power, top, most * 1.05)])],
       levels: regulated.length > 0 ? [] : openCircuit(seen),
       marks: shortCircuit(findings),
+      ...(trace === undefined ? { size: flat } : {}),
     }),
     caption(style, power),
   );
