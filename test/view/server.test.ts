@@ -10,8 +10,12 @@ import { asSent, type AView, aView, follow, post, send } from './a-view.js';
 import { before, point } from './page/viewed.js';
 
 const ended: ViewedEnd = {
-  ...{ how: 'completed', reason: null, answer: ['Load it with up to 3.18 A.'], outcome: 'conforms' },
-  ...{ safety: [{ confirmed: true, text: 'The load is off; it was read back.' }], record: 'runs/x' },
+  how: 'completed',
+  reason: null,
+  answer: ['Load it with up to 3.18 A.'],
+  outcome: 'conforms',
+  safety: [{ what: 'load', confirmed: true, text: 'The load is off; it was read back.' }],
+  record: 'runs/x',
 };
 const short: Patience = { head: 200, request: 400, idle: 200, look: 50, goodbye: 100 };
 const open: AView[] = [];

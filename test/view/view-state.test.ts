@@ -3,6 +3,7 @@ import {
   applied,
   mostNotices,
   mostPoints,
+  type ViewedEnd,
   type ViewedPoint,
   type ViewMessage,
   type ViewState,
@@ -48,10 +49,14 @@ describe('what a page knows of a run', () => {
 
   it('has nothing to ask any more once the run has ended', () => {
     const question = { id: 1, heading: 'To do', text: 'Unplug K1.', answer: 'done' } as const;
-    const ended = {
-      ...{ how: 'stopped', reason: 'stopped with Ctrl-C', answer: [], outcome: 'not-judged' },
-      ...{ safety: [], record: 'runs/x' },
-    } as const;
+    const ended: ViewedEnd = {
+      how: 'stopped',
+      reason: 'stopped with Ctrl-C',
+      answer: [],
+      outcome: 'not-judged',
+      safety: [],
+      record: 'runs/x',
+    };
     const state = after([{ kind: 'question', question }, { kind: 'stopping' }, { kind: 'ended', ended }]);
     expect(state).toMatchObject({ question: undefined, stopping: true, ended });
   });

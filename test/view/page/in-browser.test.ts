@@ -389,7 +389,8 @@ const completed: ViewedEnd = {
 
 describe('at the end', () => {
   const unsafe = {
-    ...{ what: 'load', confirmed: false },
+    what: 'load',
+    confirmed: false,
     text: 'Whether the load is off could not be read back: cut the power.',
   } as const;
   const ends: readonly [string, Partial<ViewedEnd>][] = [
