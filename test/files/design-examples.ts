@@ -155,7 +155,11 @@ export const vocabulary: Vocabulary = {
         sag: quantity('ratio', 'What counts as dropped.').prefault('5 %'),
       }),
     },
-    { kind: 'wait', summary: 'what wait does', parameters: z.strictObject({ for: quantity('time', 'How long.') }) },
+    {
+      kind: 'wait',
+      summary: 'what wait does',
+      parameters: z.strictObject({ for: quantity('time', 'How long.') }),
+    },
   ],
   findings: {
     'usable-current': 'current',
