@@ -28,9 +28,8 @@ const following = 2;
 export function firstToSaturate(held: readonly GroupLook[]): Saturated | undefined {
   const climb = held.filter(({ time }) => time === 0);
   for (const [index, look] of climb.entries()) {
-    const later = climb.slice(index + 1);
     for (const each of look.currents) {
-      const how = whatBecameOf(each, look, later);
+      const how = whatBecameOf(each, climb, index);
       if (how !== undefined) {
         return { module: each.module, how, current: each.current, total: look.total };
       }
@@ -41,22 +40,25 @@ export function firstToSaturate(held: readonly GroupLook[]): Saturated | undefin
 
 function whatBecameOf(
   each: ModuleCurrent,
-  look: GroupLook,
-  later: readonly GroupLook[],
+  climb: readonly GroupLook[],
+  index: number,
 ): Saturated['how'] | undefined {
-  const last = later.at(-1);
-  if (last === undefined) return undefined;
+  const [look, last] = [climb[index], climb.at(-1)];
+  const later = climb.length - 1 - index;
+  if (look === undefined || last === undefined || later === 0) return undefined;
   const { length } = look.currents;
-  // Given up at the first that is otherwise: of a long record nearly all is.
-  const fromThenOn = (is: (current: Amperes) => boolean): boolean =>
-    later.every(({ currents }) => {
-      const current = currents.find(({ module }) => module === each.module)?.current;
-      return current === undefined || is(current);
-    });
+  // From the end, where a current that went on growing has grown most: of a long record one look is enough.
+  const fromThenOn = (is: (current: Amperes) => boolean): boolean => {
+    for (let at = climb.length - 1; at > index; at -= 1) {
+      const current = climb[at]?.currents.find(({ module }) => module === each.module)?.current;
+      if (current !== undefined && !is(current)) return false;
+    }
+    return true;
+  };
   const carries = each.current > look.total / length / 2;
   if (carries && fromThenOn((current) => current < nothing * each.current)) return 'vanished';
   const isLargest = look.currents.every(({ current }) => current <= each.current);
   const share = (last.total - look.total) / length;
-  if (!isLargest || later.length < following) return undefined;
+  if (!isLargest || later < following) return undefined;
   return fromThenOn((current) => Math.abs(current - each.current) < noGrowth * share) ? 'stays' : undefined;
 }
