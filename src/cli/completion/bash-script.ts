@@ -1,4 +1,4 @@
-import { goThroughWords, takingArms } from './case-arms.js';
+import { goThroughWords, takesFunction } from './case-arms.js';
 import {
   commandPlaces,
   type Completed,
@@ -17,12 +17,7 @@ export function bashScript(program: CompletedProgram): string {
   const { name, options, commands } = program;
   return `# bash completion of ${name}: made by '${name} completion bash'.
 
-# Whether the option takes a word after it; 'many', where it takes all up to the next option.
-_${name}_takes() {
-  case "$1" in
-${takingArms(program)}    *) return 1 ;;
-  esac
-}
+${takesFunction(program)}
 
 # What may stand there: the value of an option, a place of a command, or the words of all options.
 _${name}_offer() {

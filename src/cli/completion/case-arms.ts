@@ -1,8 +1,17 @@
 import { type CompletedProgram, optionValues, repeatedOptions } from './completed.js';
 import { shellQuoted } from './shell-quoted.js';
 
-/** The arms of a `case` of bash or zsh by which an option is known that takes one word, or `many`. */
-export function takingArms(program: CompletedProgram): string {
+/** A function of bash or zsh by which an option is known that takes one word, or `many`. */
+export function takesFunction(program: CompletedProgram): string {
+  return `# Whether the option takes a word after it; 'many', where it takes all up to the next option.
+_${program.name}_takes() {
+  case "$1" in
+${takingArms(program)}    *) return 1 ;;
+  esac
+}`;
+}
+
+function takingArms(program: CompletedProgram): string {
   return [
     arm(repeatedOptions(program), 'many=yes'),
     arm(

@@ -57,12 +57,14 @@ export function repeatedOptions({ commands }: CompletedProgram): readonly string
   );
 }
 
-/** The places of commands, counted from 1; one that is repeated bears a `+`: `compare 2`, `check +`. */
+/** The places of commands, counted from 1; one that is repeated bears a `+`. */
 export function commandPlaces({ commands }: CompletedProgram): readonly NamedPlace[] {
-  return commands.flatMap(({ word, places, isLastRepeated }) =>
-    places.map((completed, index) => ({
-      name: `${word} ${isLastRepeated && index === places.length - 1 ? '+' : index + 1}`,
-      completed,
-    })),
+  return commands.flatMap((command) =>
+    command.places.map((completed, index) => ({ name: placeName(command, index), completed })),
   );
+}
+
+/** `compare 2`, `check +`. @param index counted from 0 */
+export function placeName({ word, places, isLastRepeated }: CompletedCommand, index: number): string {
+  return `${word} ${isLastRepeated && index === places.length - 1 ? '+' : index + 1}`;
 }

@@ -3,6 +3,7 @@ import {
   type CompletedCommand,
   type CompletedOption,
   type CompletedProgram,
+  placeName,
 } from './completed.js';
 import { fishQuoted } from './shell-quoted.js';
 
@@ -74,10 +75,9 @@ ${[
 }
 
 /** `run 1 --bench --module`: the command, the place, and the options that take a word. */
-function whereIs({ word, options, places, isLastRepeated }: CompletedCommand, index: number): string {
-  const place = isLastRepeated && index === places.length - 1 ? '+' : String(index + 1);
-  const taking = options.filter(({ value }) => value !== undefined).flatMap(({ flags }) => flags);
-  return [word, place, ...taking].join(' ');
+function whereIs(command: CompletedCommand, index: number): string {
+  const taking = command.options.filter(({ value }) => value !== undefined).flatMap(({ flags }) => flags);
+  return [placeName(command, index), ...taking].join(' ');
 }
 
 function optionText({ flags, about, value }: CompletedOption): string {
