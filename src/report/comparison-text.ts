@@ -5,6 +5,7 @@ import { changesInWords } from './changes.js';
 import { comparisonWarnings } from './comparison-warnings.js';
 import { type ComparedRecords, outcomeOf, verdictWords } from './comparison.js';
 import { printable, printableData } from './printable.js';
+import { modulesListed } from './record-heading.js';
 import type { Result } from './result.js';
 import type { Style } from './style.js';
 import { warningInWords } from './warnings.js';
@@ -40,7 +41,7 @@ function rowOf(when: string, { run, header }: Result): readonly string[] {
 }
 
 function modulesOf({ header }: Result): string {
-  return printable(header.modules.map(({ name }) => name).join(', '));
+  return printable(modulesListed(header));
 }
 
 const outcomes = {

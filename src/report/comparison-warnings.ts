@@ -1,16 +1,13 @@
 import type { ComparedRecords } from './comparison.js';
+import { modulesListed } from './record-heading.js';
 import { endedHow, type Result } from './result.js';
 import type { Warning } from './warnings.js';
 
 /** What must be known before two records are believed side by side: whose they are, and whether they are whole. */
 export function comparisonWarnings({ before, after, comparison }: ComparedRecords): readonly Warning[] {
-  const text = `the earlier record is of ${namesOf(before)}, the later one of ${namesOf(after)}.`;
+  const text = `the earlier record is of ${modulesListed(before.header)}, the later one of ${modulesListed(after.header)}.`;
   const different = comparison.sameModules ? [] : [{ word: 'DIFFERENT MODULES', text }];
   return [...different, ...[before, after].flatMap(endOf)];
-}
-
-function namesOf({ header }: Result): string {
-  return header.modules.map(({ name }) => name).join(', ');
 }
 
 function endOf(result: Result): readonly Warning[] {

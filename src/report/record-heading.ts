@@ -10,6 +10,11 @@ export function modulesInWords({ modules }: Pick<RunHeader, 'modules'>): string 
   return modules.map(({ name }) => name).join('+');
 }
 
+/** `K1, K2, K3`. */
+export function modulesListed({ modules }: Pick<RunHeader, 'modules'>): string {
+  return modules.map(({ name }) => name).join(', ');
+}
+
 /** What was measured on another day. */
 export function takenOverInWords(evidence: Pick<Evidence, 'resumed'>): readonly string[] {
   return takenOver(evidence).map(({ first, last, run, began }) => {

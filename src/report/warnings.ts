@@ -1,3 +1,4 @@
+import { modulesListed } from './record-heading.js';
 import { endedHow, type Result } from './result.js';
 import { watchmanText } from './watchman-text.js';
 
@@ -52,8 +53,9 @@ function isCutOff(result: Result): boolean {
   return endedHow(result).how === 'cut-off';
 }
 
-function otherModules({ header: { baseline, modules } }: Result): readonly Warning[] {
-  const names = modules.map(({ name }) => name).join(', ');
+function otherModules({ header }: Result): readonly Warning[] {
+  const { baseline } = header;
+  const names = modulesListed(header);
   if (baseline === undefined || baseline.modules.join(', ') === names) return [];
   const text = `the baseline is of ${baseline.modules.join(', ')}, this record of ${names}.`;
   return [{ word: 'DIFFERENT MODULES', text }];

@@ -5,7 +5,7 @@ import type { KeyEntry, Shape } from '../chart/shapes.js';
 import { type SpanRow, spanRows } from '../chart/span-rows.js';
 import { verdictWords, type ComparedRecords } from '../comparison.js';
 import type { Markup } from '../page/markup.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { hasMoved } from './compared-words.js';
 
 const title = 'How far each moved, of what is allowed';

@@ -7,7 +7,7 @@ import type { ComparedRecords } from '../comparison.js';
 import { element, type Markup } from '../page/markup.js';
 import { section } from '../page/page.js';
 import { table } from '../page/table.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { allowanceInWords, hasMoved, movedInWords, valuePlusMinus } from './compared-words.js';
 import { bothSides, type BothSides, type PageSide } from './sides.js';
 

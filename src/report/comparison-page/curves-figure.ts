@@ -9,7 +9,7 @@ import type { ComparedRecords } from '../comparison.js';
 import type { Markup } from '../page/markup.js';
 import { heldSorts, idleSort } from '../run-charts/curve-points.js';
 import { foundInWords } from '../run-charts/in-words.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { hasMoved, movedInWords } from './compared-words.js';
 import { bothSides, type PageSide } from './sides.js';
 import { turnRow } from './turn-row.js';

@@ -7,7 +7,7 @@ import type { ComparedRecords } from '../comparison.js';
 import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
 import { amps } from '../run-charts/in-words.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 
 const title = 'Later voltage less the earlier one, at the same current';
 const places = 61;

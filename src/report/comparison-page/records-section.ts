@@ -6,7 +6,7 @@ import { section } from '../page/page.js';
 import { table } from '../page/table.js';
 import { journalInWords } from '../record-words.js';
 import type { Result } from '../result.js';
-import { code } from '../run-page/facts.js';
+import { code } from '../page/facts.js';
 
 /** By what the two records are known again, and how much of them can be believed. */
 export function recordsSection({ before, after }: ComparedRecords): Markup {

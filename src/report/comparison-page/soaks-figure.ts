@@ -11,7 +11,7 @@ import { thinned } from '../chart/thinned.js';
 import type { ComparedRecords } from '../comparison.js';
 import type { Markup } from '../page/markup.js';
 import { amps, foundInWords } from '../run-charts/in-words.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { hasMoved, movedInWords } from './compared-words.js';
 import { bothSides, type PageSide } from './sides.js';
 

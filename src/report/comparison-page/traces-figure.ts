@@ -6,7 +6,7 @@ import { pointChart, type PointSort } from '../chart/point-chart.js';
 import type { ComparedRecords } from '../comparison.js';
 import type { Markup } from '../page/markup.js';
 import { amps, volts } from '../run-charts/in-words.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { hasMoved, movedInWords } from './compared-words.js';
 import { bothSides, type PageSide } from './sides.js';
 import { turnRow } from './turn-row.js';

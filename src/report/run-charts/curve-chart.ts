@@ -12,7 +12,7 @@ import type { VerticalMark } from '../chart/marks.js';
 import { type ChartPoint, type Level, pointChart, type PointSort } from '../chart/point-chart.js';
 import type { Markup } from '../page/markup.js';
 import { isWhole, type Result } from '../result.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { droppedPoints, heldSorts, idleSort } from './curve-points.js';
 import { amps, foundInWords, volts } from './in-words.js';
 

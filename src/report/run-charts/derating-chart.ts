@@ -6,7 +6,7 @@ import { roundedDown } from '../../quantity/rounded-down.js';
 import { type Fall, fallingChart } from '../chart/falling-chart.js';
 import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { amps } from './in-words.js';
 
 const title = 'From the measured limit to the recommendation';

@@ -12,7 +12,7 @@ import type { VerticalMark } from '../chart/marks.js';
 import { type ChartPoint, type Level, pointChart, type PointSort } from '../chart/point-chart.js';
 import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { amps, foundInWords, volts } from './in-words.js';
 
 /** A constant power is one within a tenth, from the lowest to the highest: half of it to each side. */

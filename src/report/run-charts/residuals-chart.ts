@@ -7,7 +7,7 @@ import { pointChart, type PointSort } from '../chart/point-chart.js';
 import { thinned } from '../chart/thinned.js';
 import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { amps } from './in-words.js';
 
 const title = 'What the points lie off the line';

@@ -21,7 +21,7 @@ import { type ChartPoint, type Level, pointChart, type PointSort } from '../char
 import { hoggingInWords } from '../group-answer.js';
 import type { Markup } from '../page/markup.js';
 import { isWhole, type Result } from '../result.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { amps, foundInWords, stepInWords } from './in-words.js';
 import { lineThrough, memberLook, once } from './member-look.js';
 

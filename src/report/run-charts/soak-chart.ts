@@ -13,7 +13,7 @@ import { type ChartPoint, type Level, pointChart, type Whisker } from '../chart/
 import type { Markup } from '../page/markup.js';
 import { together } from '../page/markup.js';
 import type { Result } from '../result.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { amps, foundInWords, volts } from './in-words.js';
 
 /** Time constants after which less than a hundredth of the rise is left. */

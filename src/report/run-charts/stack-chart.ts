@@ -19,7 +19,7 @@ import { type ChartPoint, type PointAxis, pointChart, type PointSort } from '../
 import { weakestInWords } from '../group-answer.js';
 import { type Markup, together } from '../page/markup.js';
 import type { Result } from '../result.js';
-import { figure } from '../sheet/figure.js';
+import { figure } from '../page/figure.js';
 import { amps, stepInWords, volts } from './in-words.js';
 import { lineThrough, memberLook, once } from './member-look.js';
 

@@ -5,7 +5,7 @@ import { inMinutes } from '../in-minutes.js';
 import { element, type Markup } from '../page/markup.js';
 import { againstWhat, circuitInWords, plateInWords, takenOverInWords } from '../record-heading.js';
 import { endedHow, type Result } from '../result.js';
-import { code, type Fact, facts } from './facts.js';
+import { code, type Fact, facts } from '../page/facts.js';
 
 /** What was tested on what, by which procedure, when, how it ended and by which program: a line each. */
 export function aboutRun(result: Result): Markup {

@@ -7,7 +7,7 @@ import { type Standing, standingPanel } from '../page/standing.js';
 import { modulesInWords } from '../record-heading.js';
 import { endedHow, isWhole, type Result } from '../result.js';
 import { type Warning, warningsOf } from '../warnings.js';
-import { foundInWords } from './found-in-words.js';
+import { foundPlusMinus } from './in-words.js';
 
 /** What must be known before anything is believed, then how it stands, in words and in three figures or so. */
 export function answerSection(result: Result): Markup {
@@ -85,7 +85,7 @@ function figures(result: Result): Markup | undefined {
 
 function measured(word: string, finding: Finding | undefined): Markup | undefined {
   if (finding === undefined) return undefined;
-  return cell(word, foundInWords(finding), finding.note);
+  return cell(word, foundPlusMinus(finding), finding.note);
 }
 
 function recommended(result: Result, finding: Finding | undefined): Markup | undefined {

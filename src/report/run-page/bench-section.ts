@@ -4,7 +4,7 @@ import type { RunHeader } from '../../record/run-header.js';
 import { element, type Markup } from '../page/markup.js';
 import { section } from '../page/page.js';
 import type { Result } from '../result.js';
-import { code, type Fact, facts } from './facts.js';
+import { code, type Fact, facts } from '../page/facts.js';
 
 /** What measured: the instruments as they named themselves, and what was between them and the module. */
 export function benchSection({ header }: Result): Markup {

@@ -8,7 +8,7 @@ import { element, type Markup } from '../page/markup.js';
 import { bullets, section } from '../page/page.js';
 import { table } from '../page/table.js';
 import type { Result } from '../result.js';
-import { counted, foundInWords } from './found-in-words.js';
+import { counted, foundPlusMinus } from './in-words.js';
 
 /** What each finding rests on: the readings, and where its uncertainty comes from. */
 export function budgetsSection({ findings, evidence }: Result): Markup | undefined {
@@ -30,7 +30,7 @@ export function budgetsSection({ findings, evidence }: Result): Markup | undefin
     others.length > 0 && element('h3', {}, 'Without a budget: words, bounds and choices'),
     bullets(
       byStep(others).map(([first, ...rest]) => [
-        listed([first, ...rest].map((finding) => `${finding.name} ${foundInWords(finding)}`)),
+        listed([first, ...rest].map((finding) => `${finding.name} ${foundPlusMinus(finding)}`)),
         `. ${behind(first)}`,
       ]),
     ),
@@ -70,7 +70,7 @@ function budgetOf(findings: Alike, behind: string): Markup {
   return element(
     'div',
     { class: 'one' },
-    element('h3', {}, element('span', {}, names), element('span', {}, foundInWords(finding))),
+    element('h3', {}, element('span', {}, names), element('span', {}, foundPlusMinus(finding))),
     element('p', {}, intervalInWords(finding), ' ', behind),
     table(
       `Uncertainty budget of ${names}.`,

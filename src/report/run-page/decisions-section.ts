@@ -5,7 +5,7 @@ import { section } from '../page/page.js';
 import { table } from '../page/table.js';
 import { probabilityInWords } from '../record-words.js';
 import type { Result } from '../result.js';
-import { foundInWords } from './found-in-words.js';
+import { foundPlusMinus } from './in-words.js';
 
 const verdicts: Readonly<Record<Outcome, { readonly words: string; readonly look: string }>> = {
   conforms: { words: 'conforms', look: 'good' },
@@ -37,7 +37,7 @@ export function decisionsSection({ decisions, findings }: Result): Markup | unde
         return [
           decision.finding,
           decision.requirement,
-          found === undefined ? 'nothing' : foundInWords(found),
+          found === undefined ? 'nothing' : foundPlusMinus(found),
           decided(decision),
         ];
       }),

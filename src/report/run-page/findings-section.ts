@@ -5,7 +5,7 @@ import { section } from '../page/page.js';
 import { table } from '../page/table.js';
 import type { Result } from '../result.js';
 import { verdict } from './decisions-section.js';
-import { foundInWords } from './found-in-words.js';
+import { foundPlusMinus } from './in-words.js';
 
 /** Every finding with what it is worth, a row each. */
 export function findingsSection({ findings, decisions }: Result): Markup {
@@ -28,7 +28,7 @@ export function findingsSection({ findings, decisions }: Result): Markup {
       ],
       findings.map((finding) => [
         finding.name,
-        foundInWords(finding),
+        foundPlusMinus(finding),
         factorInWords(finding),
         finding.step ?? '',
         toBeKnown(decided(finding.name), finding.note),

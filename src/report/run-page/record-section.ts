@@ -5,8 +5,8 @@ import { section } from '../page/page.js';
 import { table } from '../page/table.js';
 import { journalInWords } from '../record-words.js';
 import type { Result } from '../result.js';
-import { counted } from './found-in-words.js';
-import { code, facts } from './facts.js';
+import { counted } from './in-words.js';
+import { code, facts } from '../page/facts.js';
 
 /** By what it can be told later that the record is still the one that this page is of. */
 export function recordSection({ run, header, evidence, integrity, fingerprints }: Result): Markup {

@@ -1,7 +1,7 @@
 import { element, type Markup } from '../page/markup.js';
 import { section } from '../page/page.js';
 import { isWhole, type Result } from '../result.js';
-import { code } from './facts.js';
+import { code } from '../page/facts.js';
 
 /** Room for two people to sign by hand, beside what they sign for. */
 export function signatureSection(result: Result): Markup {

@@ -6,7 +6,7 @@ import { section } from '../page/page.js';
 import { table } from '../page/table.js';
 import type { Result } from '../result.js';
 import { takenOver } from '../taken-over.js';
-import { counted } from './found-in-words.js';
+import { counted } from './in-words.js';
 
 /** How the run went: its steps, and what happened on the way. */
 export function waySection(result: Result): Markup {

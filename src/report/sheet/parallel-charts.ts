@@ -6,7 +6,7 @@ import type { VerticalMark } from '../chart/marks.js';
 import { brief, loadInWords } from '../build/brief.js';
 import { estimateInWords } from '../build/estimate-text.js';
 import type { Markup } from '../page/markup.js';
-import { figure } from './figure.js';
+import { figure } from '../page/figure.js';
 import { isRefused } from './parts.js';
 
 const load = { label: 'Load of the group', dimension: 'current' } as const;

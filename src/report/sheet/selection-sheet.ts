@@ -11,7 +11,7 @@ import { bullets, section, type Sheet } from '../page/page.js';
 import { table } from '../page/table.js';
 import { banner } from './banner.js';
 import { circuitSection } from './circuit.js';
-import { figure } from './figure.js';
+import { figure } from '../page/figure.js';
 import { cautionsSection, partsSection } from './parts.js';
 import { concernsSection, modulesSection, sourcesSection } from './records.js';
 

@@ -5,7 +5,7 @@ import { estimateInWords } from '../build/estimate-text.js';
 import { barChart } from '../chart/bar-chart.js';
 import { lineChart } from '../chart/line-chart.js';
 import type { Markup } from '../page/markup.js';
-import { figure } from './figure.js';
+import { figure } from '../page/figure.js';
 import { isRefused } from './parts.js';
 
 /** Beyond which a direct voltage is no longer safe to touch (ES1 of IEC 62368-1). */

@@ -7,7 +7,7 @@ import { type ChartLine, lineChart } from '../chart/line-chart.js';
 import type { VerticalMark } from '../chart/marks.js';
 import type { Ribbon } from '../chart/ribbons.js';
 import type { Markup } from '../page/markup.js';
-import { figure } from './figure.js';
+import { figure } from '../page/figure.js';
 import { stretchesOf } from '../build/stretches.js';
 
 const output = { label: 'Output', dimension: 'voltage' } as const;

@@ -1,4 +1,4 @@
-import { type Content, element, type Markup } from '../page/markup.js';
+import { type Content, element, type Markup } from './markup.js';
 
 /** What is known of something: a word, and what it is; a line each. What is undefined is left out. */
 export type Fact = readonly [word: string, what: Content];

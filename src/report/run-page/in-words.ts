@@ -2,7 +2,7 @@ import type { Finding } from '../../analysis/finding.js';
 import { inOneLine } from '../finding-text.js';
 
 /** `5.088 ± 0.018 A`, `≥ 3.990 ± 0.014 A`, `hiccup`. */
-export function foundInWords(finding: Finding): string {
+export function foundPlusMinus(finding: Finding): string {
   return `${finding.bound === 'least' ? '≥ ' : ''}${inOneLine(finding)}`;
 }
 
