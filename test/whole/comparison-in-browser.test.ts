@@ -1,7 +1,6 @@
 import { existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { pathToFileURL } from 'node:url';
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { movementOf } from '../../src/judgement/movement.js';
@@ -19,7 +18,8 @@ import {
   nothingMoved,
 } from '../report/comparison-page/made-comparisons.js';
 import { limited, soaked } from '../report/run-charts/made-results.js';
-import { nobodyShutOut, openBrowser, openWindow, patience } from '../view/page/browser.js';
+import { nobodyShutOut, openBrowser, patience } from '../view/page/browser.js';
+import { chartsOn, cutOff, offThePaper, type OpenedPage, openFile } from './page-in-browser.js';
 import { textsInTheWay } from './texts-in-the-way.js';
 
 const made = { program: 'railproof test', date: new Date('2026-12-02T17:00:00Z') };
@@ -88,15 +88,13 @@ describe.skipIf(isMissing)('the page of a comparison in a browser (needs /usr/bi
       expect([...marked].sort()).toEqual(drawn.map(({ finding }) => finding).sort());
 
       expect(await textsInTheWay(page)).toEqual([]);
-      expect(await page.evaluate<string[]>(cutOff)).toEqual([]);
+      expect(await cutOff(page)).toEqual([]);
       // The others have the same parts, and each look takes its seconds.
       if (records === limitMoved) await nobodyShutOut(page);
       await page.setViewportSize({ width: 360, height: 800 });
       expect(await page.evaluate<number>('document.documentElement.scrollWidth')).toBe(360);
       expect(await textsInTheWay(page)).toEqual([]);
-      await page.emulateMedia({ media: 'print' });
-      await page.setViewportSize({ width: 680, height: 994 });
-      expect(await page.evaluate<string[]>(offThePaper)).toEqual([]);
+      expect(await offThePaper(page)).toEqual([]);
       expect(heard).toHaveLength(1);
       await close();
     },
@@ -123,40 +121,15 @@ describe.skipIf(isMissing)('the page of a comparison in a browser (needs /usr/bi
     patience,
   );
 
-  /** The page, and all that it asked for or said. */
-  async function opened(
-    name: string,
-    records: ComparedRecords,
-  ): Promise<{ page: Page; heard: string[]; close: () => Promise<void> }> {
+  async function opened(name: string, records: ComparedRecords): Promise<OpenedPage> {
     const file = join(folder, `${name}.html`);
     writeFileSync(file, comparisonPage(records, made));
-    const { page, complaints } = await openWindow(browser, 'to-look-into');
-    page.on('request', (request) => complaints.push(request.url()));
-    await page.goto(pathToFileURL(file).href);
-    return { page, heard: complaints, close: () => page.context().close() };
+    return openFile(browser, file);
   }
 });
 
-/** Each with its title, a description, and marks that can be seen. */
+/** All of them and no others, in their order. */
 async function hasCharts(page: Page, titles: readonly string[]): Promise<void> {
-  const drawings = await page.getByRole('img').all();
-  const said = await Promise.all(drawings.map((each) => each.locator('> title').textContent()));
-  expect(said).toEqual(titles.map((title) => expect.stringContaining(title) as string));
-  for (const drawing of drawings)
-    expect((await drawing.locator('> desc').textContent())?.length).toBeGreaterThan(20);
-  for (const marks of await page.evaluate<number[]>(marksOfDrawings)) expect(marks).toBeGreaterThan(1);
+  const expected = titles.map((title) => expect.stringContaining(title) as string);
+  expect(await chartsOn(page, { leastMarks: 2 })).toEqual(expected);
 }
-
-// What runs in the page is text, as the types of a browser are none of ours.
-const marksOfDrawings = `[...document.querySelectorAll('svg[role=img]')].map((svg) =>
-  [...svg.querySelectorAll('.line, .band, .shape, .whisker, .between')].filter((mark) => {
-    const { width, height } = mark.getBoundingClientRect();
-    return width + height > 0;
-  }).length)`;
-
-const cutOff = `[...document.querySelectorAll('.wide')].filter((one) => one.scrollWidth > one.clientWidth)
-  .map((one) => one.ariaLabel + ' ' + one.scrollWidth + ' > ' + one.clientWidth)`;
-
-const offThePaper = `[...document.querySelectorAll('main, header, table, figure, svg, .standing, .code')]
-  .filter((one) => one.getBoundingClientRect().right > 681)
-  .map((one) => one.outerHTML.slice(0, 120))`;

@@ -8,7 +8,8 @@ import type { Result } from '../../src/report/result.js';
 import { runPage } from '../../src/report/run-page/run-page.js';
 import { eventsOf } from '../analysis/evidence-of.js';
 import { header, resultOf, steps } from '../report/fixed-record.js';
-import { nobodyShutOut, openBrowser, openWindow, patience } from '../view/page/browser.js';
+import { nobodyShutOut, openBrowser, patience } from '../view/page/browser.js';
+import { chartsOn, cutOff, offThePaper, openFile } from './page-in-browser.js';
 import { runShipped, shown } from './shipped-runs.js';
 import { textsInTheWay } from './texts-in-the-way.js';
 
@@ -76,7 +77,7 @@ describe.skipIf(isMissing)('the report of a run in a browser (needs /usr/bin/chr
     async (procedure) => {
       const result = await runShipped(procedure, folder);
       const file = join(folder, result.run, 'report.html');
-      const { page, heard, close } = await opened(file);
+      const { page, heard, close } = await openFile(browser, file);
       expect(heard).toEqual([pathToFileURL(file).href]);
       expect(await page.locator('h1').innerText()).toContain(result.header.procedure.title);
       expect(await page.locator('.word').first().innerText()).toBe('Conforms');
@@ -84,7 +85,7 @@ describe.skipIf(isMissing)('the report of a run in a browser (needs /usr/bin/chr
       await hasCharts(page, charts[procedure] ?? []);
       await standsClear(page);
       await page.setViewportSize({ width: 1100, height: 800 });
-      expect(await page.evaluate<string[]>(cutOff)).toEqual([]);
+      expect(await cutOff(page)).toEqual([]);
       await nobodyShutOut(page);
       await page.setViewportSize({ width: 360, height: 800 });
       expect(await page.evaluate<number>('document.documentElement.scrollWidth')).toBe(360);
@@ -104,7 +105,7 @@ describe.skipIf(isMissing)('the report of a run in a browser (needs /usr/bin/chr
       { t: 71, event: 'ended', how: 'stopped', reason: hostile, status: 3 } as const,
     ];
     const renamed = { ...header, modules, procedure: { ...header.procedure, title: hostile } };
-    const { page, heard, close } = await opened(kept('hostile', resultOf(events, renamed)));
+    const { page, heard, close } = await openFile(browser, kept('hostile', resultOf(events, renamed)));
     expect(heard).toHaveLength(1);
     expect(await page.title()).toContain(hostile);
     expect(await page.locator('script, img, [onload], [onerror]').count()).toBe(0);
@@ -123,30 +124,15 @@ describe.skipIf(isMissing)('the report of a run in a browser (needs /usr/bin/chr
     writeFileSync(file, runPage(result, made));
     return file;
   }
-
-  /** The page, and all that it asked for or said. */
-  async function opened(file: string): Promise<{ page: Page; heard: string[]; close: () => Promise<void> }> {
-    const { page, complaints } = await openWindow(browser, 'to-look-into');
-    page.on('request', (request) => complaints.push(request.url()));
-    await page.goto(pathToFileURL(file).href);
-    return { page, heard: complaints, close: () => page.context().close() };
-  }
 });
 
-/** Those that must be there, in their order; and each that is, with a title, a description and marks that can be seen. */
+/** Those that must be there, in their order. */
 async function hasCharts(page: Page, expected: readonly string[]): Promise<void> {
-  const drawings = await page.getByRole('img').all();
-  const titles: string[] = [];
-  for (const drawing of drawings) {
-    // A number and its unit are held together on the page.
-    titles.push((await drawing.locator('> title').textContent())?.replaceAll('\u00a0', ' ') ?? '');
-    expect((await drawing.locator('> desc').textContent())?.length).toBeGreaterThan(20);
-  }
+  const titles = await chartsOn(page, { leastMarks: 3 });
   const found = titles.map((title) => expected.find((each) => title.startsWith(each)));
   expect(found.filter((each) => each !== undefined)).toEqual(expected);
   expect(titles.every((title) => title.length > 5)).toBe(true);
-  expect(drawings.length === 0).toBe(expected.length === 0);
-  for (const marks of await page.evaluate<number[]>(marksOfDrawings)) expect(marks).toBeGreaterThan(2);
+  expect(titles.length === 0).toBe(expected.length === 0);
 }
 
 async function standsClear(page: Page): Promise<void> {
@@ -164,25 +150,5 @@ async function printsOnA4(page: Page): Promise<void> {
     expect(Math.abs((box?.[2] ?? NaN) - 595.28)).toBeLessThan(1);
     expect(Math.abs((box?.[3] ?? NaN) - 841.89)).toBeLessThan(1);
   }
-  await page.emulateMedia({ media: 'print' });
-  await page.setViewportSize({ width: 680, height: 994 });
-  expect(await page.evaluate<string[]>(offThePaper)).toEqual([]);
-  await page.emulateMedia({ media: 'screen' });
+  expect(await offThePaper(page)).toEqual([]);
 }
-
-// What runs in the page is text, as the types of a browser are none of ours.
-const marksOfDrawings = `[...document.querySelectorAll('svg[role=img]')].map((svg) =>
-  [...svg.querySelectorAll('.line, .band, .bar, .shape, .whisker, .between')].filter((mark) => {
-    const { width, height } = mark.getBoundingClientRect();
-    return width + height > 0;
-  }).length)`;
-
-const cutOff = `[...document.querySelectorAll('.wide')].filter((one) => one.scrollWidth > one.clientWidth)
-  .map((one) => one.ariaLabel + ' ' + one.scrollWidth + ' > ' + one.clientWidth)`;
-
-const offThePaper = `[...document.querySelectorAll('main, header, table, figure, svg, .standing, .facts, .sign, .code')]
-  .filter((one) => {
-    const { right, height } = one.getBoundingClientRect();
-    return right > 681 || (height > 994 && one.matches('figure, svg, .standing, .sign'));
-  })
-  .map((one) => one.outerHTML.slice(0, 120))`;
