@@ -17,7 +17,7 @@ export interface TcpPatience {
 
 const whenRefused =
   'Is it switched on, is its remote control enabled, and is the port the right one? ' +
-  'Is another program connected? Some instruments serve only one at a time.';
+  'Is another program connected, as some instruments serve only one program at a time?';
 
 /**
  * Opens a raw socket to an instrument.
