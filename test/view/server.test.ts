@@ -135,7 +135,7 @@ describe('those who follow a run', () => {
 describe('the end of a view', () => {
   it('reaches every page, and frees the port', async () => {
     const { view, port, cookie } = await seen();
-    const pages = await Promise.all(Array.from({ length: 12 }, () => follow(port, cookie)));
+    const pages = await Promise.all(Array.from({ length: 4 }, () => follow(port, cookie)));
     view.show({ kind: 'ended', ended });
     view.show({ kind: 'input', input: 'on' });
     await view.close();
