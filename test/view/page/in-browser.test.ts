@@ -330,6 +330,41 @@ describe('the stop button', () => {
   });
 });
 
+describe('several pages in one browser, which keeps six lines to the runner and no more', () => {
+  it('a fifth is told that there are too many; a stop leaves each of them at once, and the fifth takes a place that comes free', async () => {
+    const {
+      view,
+      stop,
+      page: first,
+    } = await viewed({ step: 2, input: 'on' }, await openWindow(browser, 'as-it-is'));
+    const context = first.context();
+    const open = async (): Promise<Page> => {
+      const page = await context.newPage();
+      await page.goto(new URL('/', view.address).href);
+      return page;
+    };
+    const [second, third, fourth] = [await open(), await open(), await open()];
+    const following = [first, second, third, fourth];
+    for (const page of following) await page.locator('#line', { hasText: 'followed live' }).waitFor();
+    const fifth = await open();
+    await fifth.locator('#lost', { hasText: 'Too many pages follow this run.' }).waitFor();
+    for (const [index, page] of [...following, fifth].entries()) {
+      await page.getByRole('button', { name: /^Stop/ }).click();
+      await vi.waitFor(() => {
+        expect(stop).toHaveBeenCalledTimes(index + 1);
+      }, patience);
+      // A wish that is kept waiting for a line is given up after some seconds, and the page says so.
+      await page.locator('#stop-word', { hasText: 'Making the bench safe…' }).waitFor();
+      expect(await page.locator('#trouble').isHidden()).toBe(true);
+    }
+    await second.close();
+    await fifth.locator('#line', { hasText: 'followed live' }).waitFor();
+    expect(await fifth.locator('#lost').isHidden()).toBe(true);
+    expect(await fifth.locator('#load-word').innerText()).toBe('Load on');
+    await context.close();
+  });
+});
+
 describe('when the runner is not heard', () => {
   it('the page says that the load may be on, what was read last, and why; and what to do on a new address', async () => {
     const { view, page } = await viewed({ step: 2, input: 'on', figures: { voltage: 15.2 } });
