@@ -1,13 +1,13 @@
-import { type Finding, findingNamed } from '../../analysis/finding.js';
+import { findingNamed } from '../../analysis/finding.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
 import { answer } from '../answer.js';
+import { inOneLine } from '../finding-text.js';
 import { type Content, element, type Markup, together } from '../page/markup.js';
 import { bullets } from '../page/page.js';
 import { type Standing, standingPanel } from '../page/standing.js';
 import { modulesInWords } from '../record-heading.js';
 import { endedHow, isWhole, type Result } from '../result.js';
 import { type Warning, warningsOf } from '../warnings.js';
-import { foundPlusMinus } from './in-words.js';
 
 /** What must be known before anything is believed, then how it stands, in words and in three figures or so. */
 export function answerSection(result: Result): Markup {
@@ -70,31 +70,50 @@ function inSentence(word: string): string {
 
 /** What the reader came for, to be read from two steps away. */
 function figures(result: Result): Markup | undefined {
-  const { findings } = result;
-  const named = (name: string): Finding | undefined => findingNamed(findings, name);
   const cells = [
-    recommended(result, named('recommended-current')),
-    measured('Usable', named('usable-current')),
-    measured('Limit style', named('limit-style')),
-    measured('Hogging module', named('hogging-module')),
-    measured('Weakest module', named('weakest-module')),
-    measured('Output to earth', named('earth-relation')),
+    recommended(result),
+    measured(result, 'Usable', 'usable-current'),
+    measured(result, 'Limit style', 'limit-style'),
+    measured(result, 'Hogging module', 'hogging-module'),
+    measured(result, 'Weakest module', 'weakest-module'),
+    measured(result, 'Output to earth', 'earth-relation'),
   ].filter((cell) => cell !== undefined);
   return cells.length === 0 ? undefined : element('dl', { class: 'figures' }, cells);
 }
 
-function measured(word: string, finding: Finding | undefined): Markup | undefined {
+/** What a test that was not finished saw stands in small letters: from two steps away it would pass for a result. */
+function measured(result: Result, word: string, name: string): Markup | undefined {
+  const finding = findingNamed(result.findings, name);
   if (finding === undefined) return undefined;
-  return cell(word, foundPlusMinus(finding), finding.note);
+  const found = `${finding.bound === 'least' ? 'at least ' : ''}${inOneLine(finding)}`;
+  if (isWhole(result)) return cell(word, found, finding.note);
+  const [large, before] = notWhole(result);
+  return cell(word, large, `${before}: ${found}${finding.note === '' ? '' : `; ${finding.note}`}`);
 }
 
-function recommended(result: Result, finding: Finding | undefined): Markup | undefined {
+function notWhole(result: Result): readonly [large: string, before: string] {
+  return result.integrity.kind === 'damaged'
+    ? ['record damaged', 'as far as it can be believed']
+    : ['not finished', 'seen so far'];
+}
+
+function recommended(result: Result): Markup | undefined {
+  const finding = findingNamed(result.findings, 'recommended-current');
   if (finding === undefined) return undefined;
   const word = 'Recommended, continuously';
-  if (!isWhole(result)) return cell(word, 'nothing', 'the test was not finished');
+  if (!isWhole(result))
+    return cell(
+      word,
+      'nothing',
+      result.integrity.kind === 'damaged' ? 'the record is damaged' : 'the test was not finished',
+    );
   if (result.outcome === 'does-not-conform') return cell(word, 'nothing', 'it does not conform');
   const current = Number(finding.value);
-  return cell(word, current > 0 ? `up to ${roundedDown(current, 'current')}` : 'no load', finding.note);
+  if (current <= 0) return cell(word, 'no load', finding.note);
+  const upTo = `up to ${roundedDown(current, 'current')}`;
+  if (result.outcome === 'undecided')
+    return cell(word, `${upTo}, if it conforms`, `whether it does is undecided; ${finding.note}`);
+  return cell(word, finding.bound === 'least' ? `${upTo}, as far as tried` : upTo, finding.note);
 }
 
 function cell(word: string, value: string, note: string): Markup {

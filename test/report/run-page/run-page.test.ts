@@ -27,6 +27,11 @@ function said(html: string): string {
     .replace(/[\s\u00a0]+/g, ' ');
 }
 
+/** What stands in large figures, to be read from two steps away. */
+function large(html: string): readonly string[] {
+  return [...html.matchAll(/<dd class="big">(.*?)<\/dd>/g)].map(([, text = '']) => said(text));
+}
+
 /** From one heading to the next. */
 function sectionOf(html: string, heading: string): string {
   const start = html.indexOf(`>${heading}</h2>`);
@@ -184,6 +189,15 @@ describe('the report of a test that is not whole', () => {
     expect(text.indexOf('As far as it went:')).toBeGreaterThan(text.indexOf('Nobody should load'));
     expect(text).not.toMatch(/load it continuously|load the module continuously/i);
     expect(text).toContain('Recommended, continuously nothing');
+    const [recommended, ...others] = large(html);
+    expect(recommended).toBe('nothing');
+    expect(others.length).toBeGreaterThan(1);
+    expect([...new Set(others)]).toEqual([
+      result.integrity.kind === 'damaged' ? 'record damaged' : 'not finished',
+    ]);
+    expect(text).toMatch(
+      /Usable (record damaged as far as it can be believed|not finished seen so far): 5\.075 ±/,
+    );
     expect(html).not.toContain('id="derating');
     expect(sectionOf(html, 'How the recommendation comes about')).toContain('Nothing is recommended');
     expect(sectionOf(html, 'Signed')).toContain('releases nothing');
@@ -204,6 +218,31 @@ describe('the report of a test that is not whole', () => {
     const text = said(page(resultOf(eventsOf([], false))));
     expect(text).toContain('No findings: the record holds too little.');
     expect(text).toContain('Cut off: this test was not finished');
+  });
+});
+
+describe('the large figures of a test that came to its end', () => {
+  const result = understand(kept);
+  const changed = (name: string): Result['findings'] =>
+    result.findings.map((finding) => (finding.name === name ? { ...finding, bound: 'least' } : finding));
+
+  it('say up to what it may be loaded', () => {
+    expect(large(page(result))).toContain('up to 4.00 A');
+  });
+
+  it('say so where it is not decided whether it conforms', () => {
+    const html = page({ ...result, outcome: 'undecided' });
+    expect(large(html)).toContain('up to 4.00 A, if it conforms');
+    expect(said(html)).toContain('if it conforms whether it does is undecided; ');
+  });
+
+  it('say so where no limit was met', () => {
+    expect(large(page({ ...result, findings: changed('recommended-current') }))).toContain(
+      'up to 4.00 A, as far as tried',
+    );
+    expect(large(page({ ...result, findings: changed('usable-current') }))).toContain(
+      'at least 5.080 ± 0.018 A',
+    );
   });
 });
 
