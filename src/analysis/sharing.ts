@@ -45,6 +45,16 @@ export function sharingFindings(
       ownLabels: smallestLabel(header),
     };
   }
+  if (header.modules.length < 2) {
+    const note = 'the record has one module only, which shares with none';
+    return {
+      findings: [
+        ...present(groupCurrent(evidence, found, '')),
+        inWords('hogging-module', 'undetermined', { step, note }),
+      ],
+      ownLabels: smallestLabel(header),
+    };
+  }
   if (highest === undefined) return { findings: present(groupCurrent(evidence, found, '')) };
   const { imbalance: setting, tolerance } = settingsOf(evidence, highest.step);
   const lines = moduleLines(header, looks, saturated);

@@ -260,4 +260,19 @@ describe('a record of a group that holds little', () => {
   ])('gives what there is: %s', (_, points, names) => {
     expect([...findingsOf(headerOf({ K1: alike, K2: alike }), points).keys()]).toEqual(names);
   });
+
+  it('that has one module only is read all the same, and says why nothing is told of shares', () => {
+    const found = findingsOf(headerOf({ K1: alike }), sharingPoints({ K1: alike }, loads));
+    expect([...found.keys()]).toEqual([
+      'usable-current',
+      'recommended-current',
+      'group-current',
+      'hogging-module',
+    ]);
+    expect(found.get('hogging-module')).toMatchObject({
+      value: 'undetermined',
+      note: 'the record has one module only, which shares with none',
+    });
+    expect(found.get('recommended-current')?.value).toBeLessThanOrEqual(4);
+  });
 });

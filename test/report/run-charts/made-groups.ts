@@ -22,14 +22,14 @@ export const ordinary = {
   },
 };
 
-/** The record of one sharing-log or stack-check. One module alone is no group that findings are made of. */
+/** The record of one sharing-log or stack-check. */
 export function circuitResult(header: RunHeader, points: readonly CircuitPoint[]): Result {
   const evidence = circuitEvidence(header, points);
   return {
     ...resultOf([], header),
     evidence,
     integrity: { kind: 'whole', lines: 0, bytes: 0 },
-    findings: header.modules.length < 2 ? [] : analyse(evidence),
+    findings: analyse(evidence),
   };
 }
 
