@@ -31,12 +31,7 @@ const charts: Readonly<Record<string, readonly string[]>> = {
     'Past the limit: foldback',
     'From the measured limit',
   ],
-  'thermal-soak': [
-    'Voltage over current',
-    'Soak at 3.990 A',
-    'Voltage during the soak',
-    'From the measured limit',
-  ],
+  'thermal-soak': ['Soak at 3.990 A', 'Voltage during the soak', 'From the measured limit'],
   isolation: [],
   acceptance: [
     'Voltage over current',

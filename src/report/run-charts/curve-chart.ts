@@ -13,7 +13,7 @@ import { type ChartPoint, type Level, pointChart, type PointSort } from '../char
 import type { Markup } from '../page/markup.js';
 import { isWhole, type Result } from '../result.js';
 import { figure } from '../page/figure.js';
-import { droppedPoints, heldSorts, idleSort } from './curve-points.js';
+import { droppedPoints, heldSorts, idleSort, isSoakAlone } from './curve-points.js';
 import { amps, foundInWords, volts } from './in-words.js';
 
 /** A line and its interval are bent: so many places of it are reckoned. */
@@ -23,10 +23,12 @@ const nearby = 0.05;
 
 /**
  * V against I: all that was held, what was dropped, the line of regulation with its interval, and the currents that
- * the record comes to. Undefined where nothing was held and no open circuit was read.
+ * the record comes to. Undefined where nothing was held and no open circuit was read, and of a soak alone, whose own
+ * chart shows its voltage.
  */
 export function curveFigure(result: Result): Markup | undefined {
   const { evidence, header } = result;
+  if (isSoakAlone(evidence)) return undefined;
   const seen = curveSeen(evidence);
   const held = [...heldSorts(evidence), idleSort(evidence)];
   const plate = ratedOf(header);

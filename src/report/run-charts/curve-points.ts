@@ -38,6 +38,21 @@ export function heldSorts({ steps }: Evidence): readonly PointSort[] {
   return (Object.keys(sorts) as Sort[]).map((sort) => ({ ...sorts[sort], points: points[sort] }));
 }
 
+/** What a search held on its way to the limit. */
+export function heldInSearch(evidence: Evidence): PointSort {
+  const points = heldSorts(evidence).flatMap((sort) => (sort.name === sorts.search.name ? sort.points : []));
+  return { ...sorts.search, name: 'held in the search', points };
+}
+
+/** Whether all that was loaded is a soak that held its one current: of that there is no curve to draw. */
+export function isSoakAlone({ steps }: Evidence): boolean {
+  const loaded = steps
+    .flatMap(({ points }) => points)
+    .filter((point) => isHeld(point) || point.outcome === 'dropped');
+  const currents = new Set(loaded.map(({ set }) => set.current));
+  return currents.size === 1 && loaded.every(({ phase, outcome }) => phase === 'soak' && outcome === 'held');
+}
+
 /** With the input off. */
 export function idleSort({ steps }: Evidence): PointSort {
   const points = steps

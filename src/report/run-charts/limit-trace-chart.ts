@@ -13,6 +13,7 @@ import { type ChartPoint, type Level, pointChart, type PointSort } from '../char
 import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
 import { figure } from '../page/figure.js';
+import { heldInSearch } from './curve-points.js';
 import { amps, foundInWords, volts } from './in-words.js';
 
 /** A constant power is one within a tenth, from the lowest to the highest: half of it to each side. */
@@ -31,8 +32,11 @@ export function limitTraceFigure({ evidence, findings }: Result): Markup | undef
   const seen = curveSeen(evidence);
   const { trace } = seen;
   const sorts = [...tracedSorts(trace), overloaded(evidence)];
-  const points = sorts.flatMap((sort) => sort.points);
-  if (points.length === 0) return undefined;
+  const past = sorts.flatMap((sort) => sort.points);
+  if (past.length === 0) return undefined;
+  // Samples of an overload alone hang in the air: what was held before shows where they come from.
+  const before = trace === undefined ? [heldInSearch(evidence)] : [];
+  const points = [...past, ...before.flatMap((sort) => sort.points)];
   const [, most] = extremesOf(points.map(({ x }) => x));
   const style = findingNamed(findings, 'limit-style');
   const power = style?.value === 'constant-power' ? meanPower(trace) : undefined;
@@ -44,10 +48,10 @@ export function limitTraceFigure({ evidence, findings }: Result): Markup | undef
     pointChart({
       id: 'limit-trace',
       title,
-      description: inWords(seen, findings, style, points.length),
+      description: inWords(seen, findings, style, past.length),
       x: { label: 'Current', dimension: 'current', from: 0, to: Math.max(most * 1.05, 0.1) },
       y: { label: 'Voltage', dimension: 'voltage', from: 0, to: top * 1.04 },
-      sorts,
+      sorts: [...before, ...sorts],
       lines: [...regulated, ...(power === undefined ? [] : [hyperbola(power, top, most * 1.05)])],
       levels: regulated.length > 0 ? [] : openCircuit(seen),
       marks: shortCircuit(findings),

@@ -82,6 +82,15 @@ describe('a limit', () => {
     expect(dots[0]?.says).toContain('asked for 5.600\u00a0A; step 3, overload');
   });
 
+  it('of an overload alone shows what the search held before, from where it fell', () => {
+    const of = (result: Parameters<typeof limitTraceFigure>[0]): readonly number[] =>
+      read(limitTraceFigure(result)).marks.flatMap(({ shape, x }) => (shape === 'diamond' ? [x] : []));
+    const held = of(resultOf());
+    expect(Math.max(...held)).toBeCloseTo(5.3, 1);
+    expect(held.length).toBeGreaterThan(3);
+    expect(of(limited(steady))).toEqual([]);
+  });
+
   it('is not there where nobody looked for it', () => {
     expect(limitTraceFigure(madeResult([]))).toBeUndefined();
     expect(limitTraceFigure(madeResult([idle, upAndBack]))).toBeUndefined();

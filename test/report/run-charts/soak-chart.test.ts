@@ -83,13 +83,18 @@ describe('a soak', () => {
       { temperature: odd, until: 20_000, every: 1, voltage: (t) => 15.1 + 1e-3 * Math.sin(t) },
       thermometerHeader(room),
     );
-    for (const figure of [soakFigure(result), curveFigure(result)]) {
-      expect(figure?.toString().length).toBeLessThan(150_000);
-    }
+    expect(soakFigure(result)?.toString().length).toBeLessThan(150_000);
     const { marks, texts } = readChart(soakFigure(result) ?? curveNever(), 'soak');
     expect(Math.max(...marks.map(({ y }) => y))).toBeCloseTo(63, 0);
     expect(marks.length).toBeLessThanOrEqual(302);
     expect(texts.some((text) => / of 20001 drawn$/.test(text))).toBe(true);
+  });
+
+  it('of one current is no curve: voltage over current is not drawn', () => {
+    const result = soaked({ temperature: warming });
+    expect(soakFigure(result)).toBeDefined();
+    expect(curveFigure(result)).toBeUndefined();
+    expect(curveFigure(soaked({ temperature: warming, dropsAt: 1200 }))).toBeDefined();
   });
 
   it('is not there where nothing was soaked', () => {
