@@ -6,6 +6,8 @@ import { type Browser, chromium, type Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { buildPage } from '../../src/report/page/build-page.js';
 import { madeParallel, madeSelection, madeSeries, madeStages } from '../report/sheet/made-builds.js';
+import { nobodyShutOut } from '../view/page/browser.js';
+import { openFile } from './page-in-browser.js';
 import { textsInTheWay } from './texts-in-the-way.js';
 
 const executablePath = '/usr/bin/chromium';
@@ -77,6 +79,14 @@ describe.skipIf(isMissing)('a build sheet in a browser (needs /usr/bin/chromium)
 
     it('has no two texts of a drawing over each other, and none outside of it', async () => {
       expect(await textsInTheWay(page)).toEqual([]);
+    });
+
+    it('shuts nobody out, in the light, in the dark or on a phone', async () => {
+      const looked = await openFile(browser, join(folder, `${name}.html`));
+      await nobodyShutOut(looked.page);
+      await looked.page.setViewportSize({ width: 360, height: 800 });
+      await nobodyShutOut(looked.page);
+      await looked.close();
     });
 
     it('shows its tables whole on a desk screen', async () => {
