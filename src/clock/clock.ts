@@ -4,7 +4,7 @@ export interface Clock {
   now(): number;
   /** The wall clock, for the one place in a record that names a date. */
   wall(): Date;
-  /** Waits; rejects with the signal's reason when it is aborted first. */
+  /** Waits, never less than that; rejects with the signal's reason when it is aborted first. */
   sleep(seconds: number, signal?: AbortSignal): Promise<void>;
 }
 

@@ -1,5 +1,6 @@
 import { performance } from 'node:perf_hooks';
 import type { Clock } from './clock.js';
+import { afterRealTime } from './real-timer.js';
 
 /** The machine's own clock. */
 export const realClock: Clock = {
@@ -12,13 +13,13 @@ export const realClock: Clock = {
         return;
       }
       const stop = (): void => {
-        clearTimeout(timer);
+        callOff();
         reject(signal?.reason as Error);
       };
-      const timer = setTimeout(() => {
+      const callOff = afterRealTime(seconds, () => {
         signal?.removeEventListener('abort', stop);
         resolve();
-      }, seconds * 1000);
+      });
       signal?.addEventListener('abort', stop, { once: true });
     }),
 };

@@ -1,3 +1,4 @@
+import { afterRealTime } from '../clock/real-timer.js';
 import type { RailproofError } from '../errors/railproof-error.js';
 import type { Seconds } from '../quantity/quantity.js';
 
@@ -64,13 +65,13 @@ export class Incoming {
   #arrival(within: Seconds): Promise<void> {
     return new Promise((resolve) => {
       const done = (): void => {
-        clearTimeout(timer);
+        callOff();
         // Woken after its time was over, it is done twice; the next one may be waiting by then.
         if (this.#wake === done) this.#wake = undefined;
         resolve();
       };
       // On a busy machine the time may be over before we had a turn to take in what came well within it.
-      const timer = setTimeout(() => void turnOfTheEventLoop().then(done), Math.ceil(within * 1000));
+      const callOff = afterRealTime(within, () => void turnOfTheEventLoop().then(done));
       this.#wake = done;
     });
   }

@@ -27,6 +27,15 @@ describe('what arrives on a line', () => {
     expect(await waiting).toEqual(Buffer.from('4'));
   });
 
+  it('is waited for as long as asked, to the fraction of a millisecond', async () => {
+    const { arriving } = incoming();
+    for (let time = 0; time < 10; time++) {
+      const began = performance.now();
+      expect(await arriving.take(0.0097)).toBeUndefined();
+      expect(performance.now() - began).toBeGreaterThanOrEqual(9.7);
+    }
+  });
+
   it('is not waited for any longer than asked', async () => {
     const { arriving } = incoming();
     const began = performance.now();
