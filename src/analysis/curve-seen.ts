@@ -6,6 +6,7 @@ import { type DropoutBracket, dropoutBracket, dropoutFindings } from './dropout.
 import type { Evidence } from './evidence.js';
 import { type Finding, numberNamed } from './finding.js';
 import { type LimitTrace, limitTraceOf } from './limit-trace.js';
+import { oncePerEvidence } from './once-per-evidence.js';
 import { findKnee } from './onset.js';
 import { openCircuitFindings } from './open-circuit.js';
 import { regulationFindings } from './regulation.js';
@@ -43,7 +44,9 @@ export interface CurveSeen {
   };
 }
 
-export function curveSeen(evidence: Evidence): CurveSeen {
+export const curveSeen = oncePerEvidence(curveOf);
+
+function curveOf(evidence: Evidence): CurveSeen {
   const held = heldPoints(evidence.steps);
   const unsteady = steadinessFindings(evidence, held);
   const edge = numberNamed(unsteady, 'unsteady-above-current') ?? Number.POSITIVE_INFINITY;

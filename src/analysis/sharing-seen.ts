@@ -5,6 +5,7 @@ import type { Evidence } from './evidence.js';
 import { heldLooks } from './held-looks.js';
 import { currentsAddUp, type Kirchhoff } from './kirchhoff.js';
 import { expandedCurrent, type GroupLook, groupLooks } from './module-currents.js';
+import { oncePerEvidence } from './once-per-evidence.js';
 import { firstToSaturate, type Saturated } from './saturation.js';
 import { shareBudget, sumOf } from './shares.js';
 
@@ -20,7 +21,9 @@ export interface SharingSeen {
 }
 
 /** Undefined where the circuit is no group. */
-export function sharingSeen(evidence: Evidence): SharingSeen | undefined {
+export const sharingSeen = oncePerEvidence(sharingOf);
+
+function sharingOf(evidence: Evidence): SharingSeen | undefined {
   const { header } = evidence;
   if (header.circuit !== 'parallel') return undefined;
   const looks = groupLooks(evidence);

@@ -4,6 +4,7 @@ import type { Soaked } from './derating.js';
 import type { Evidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
 import { amps, degrees } from './in-words.js';
+import { oncePerEvidence } from './once-per-evidence.js';
 import { promised, promisedErrors } from './promised-errors.js';
 import type { SettledTemperature, TimeConstant } from './settled-temperature.js';
 import { type SoakSeen, soaksSeen } from './soak-seen.js';
@@ -53,7 +54,9 @@ export function soakedOf(evidence: Evidence): Soaked | undefined {
 }
 
 /** The one at the highest current among those that tell where the temperature goes, or else among all. */
-export function governingSoak(evidence: Evidence): SoakSeen | undefined {
+export const governingSoak = oncePerEvidence(governing);
+
+function governing(evidence: Evidence): SoakSeen | undefined {
   return [...soaksSeen(evidence)].sort(
     (one, other) =>
       Number(other.settling !== undefined) - Number(one.settling !== undefined) ||

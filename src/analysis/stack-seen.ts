@@ -3,6 +3,7 @@ import type { RunHeader } from '../record/run-header.js';
 import { combine, expandedFor } from '../statistics/uncertainty-budget.js';
 import type { Evidence } from './evidence.js';
 import { type StackLook, stackLooks, sumBudget, sumUpTo } from './module-voltages.js';
+import { oncePerEvidence } from './once-per-evidence.js';
 import { isComplete } from './place-looks.js';
 import { type Collapse, firstCollapse } from './weakest-module.js';
 
@@ -30,7 +31,9 @@ export interface Reversed {
 }
 
 /** Undefined where the circuit is no string. */
-export function stackSeen(evidence: Evidence): StackSeen | undefined {
+export const stackSeen = oncePerEvidence(stackOf);
+
+function stackOf(evidence: Evidence): StackSeen | undefined {
   const { header } = evidence;
   if (header.circuit !== 'series') return undefined;
   const looks = stackLooks(evidence);

@@ -67,10 +67,11 @@ export interface CircuitPoint {
 
 /** The evidence of one step at the places of a circuit. */
 export function circuitEvidence(header: RunHeader, points: readonly CircuitPoint[]): Evidence {
-  return collected(events(header, points), header);
+  return collected(circuitEvents(header, points), header);
 }
 
-function* events(header: RunHeader, points: readonly CircuitPoint[]): Generator<TimedEvent> {
+/** The events of one step at the places of a circuit, to the end of its run. */
+export function* circuitEvents(header: RunHeader, points: readonly CircuitPoint[]): Generator<TimedEvent> {
   const across = header.circuit === 'parallel' ? 'ballast' : 'output';
   let t = 0;
   const timed = (event: JournalEvent): TimedEvent => ({ t, ...event });

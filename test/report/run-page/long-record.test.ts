@@ -7,8 +7,16 @@ import { makeRunFolder, replaceFile, writeHeader } from '../../../src/record/run
 import { newSealer, sealLine } from '../../../src/record/seal.js';
 import { runPage } from '../../../src/report/run-page/run-page.js';
 import { understand } from '../../../src/report/understand.js';
+import type { RunHeader } from '../../../src/record/run-header.js';
+import {
+  circuitEvents,
+  circuitHeader,
+  type CircuitPoint,
+  sharingPoints,
+} from '../../analysis/circuit-evidence.js';
 import { evenly, eventsOf } from '../../analysis/evidence-of.js';
 import { soak, thermometerHeader, warming } from '../../analysis/soak-events.js';
+import { alike, ordinary } from '../run-charts/made-groups.js';
 import { brick } from '../run-charts/made-results.js';
 
 const made = { program: 'railproof test', date: new Date('2026-12-02T18:20:00Z') };
@@ -42,10 +50,49 @@ function eventsWith(readings: number): readonly TimedEvent[] {
   ];
 }
 
+interface Long {
+  readonly header: RunHeader;
+  readonly events: readonly TimedEvent[];
+}
+
+function ofOneModule(readings: number): Long {
+  return { header: thermometerHeader(), events: eventsWith(readings) };
+}
+
+const bricks = { K1: { ...alike, voltage: 15.214 }, K2: alike };
+const names = Object.keys(bricks);
+
+/** A group that climbs by very many loads, one reading of everything at each: five readings a load. */
+function ofAGroup(readings: number): Long {
+  const ballasts = Object.fromEntries(names.map((name) => [name, [alike.ballast, 0.0005] as const]));
+  const header = circuitHeader({ circuit: 'parallel', ballasts, ...ordinary });
+  return longOf(header, sharingPoints(bricks, evenly(0.4, 8, Math.round(readings / 5))));
+}
+
+/** A string that climbs likewise. */
+function ofAString(readings: number): Long {
+  const header = circuitHeader({
+    circuit: 'series',
+    ballasts: Object.fromEntries(names.map((name) => [name, [0, 0] as const])),
+    ...ordinary,
+  });
+  const climb = evenly(0, 4, Math.round(readings / 5)).map((set, index): CircuitPoint => {
+    const each = brick(set) + 0.001 * Math.sin(index * 7);
+    return { set, outcome: 'held', output: 2 * each, places: { K1: each, K2: each } };
+  });
+  return longOf(header, climb);
+}
+
+function longOf(header: RunHeader, points: readonly CircuitPoint[]): Long {
+  const [opened] = eventsOf([]);
+  if (opened === undefined) throw new Error('no event opens a run');
+  return { header, events: [opened, ...circuitEvents(header, points)] };
+}
+
 /** The folder of a record that holds these, every seal in its place. */
-function recordOf(events: readonly TimedEvent[]): ReturnType<typeof makeRunFolder> {
-  const folder = makeRunFolder(runs, made.date, 'K1', 'long');
-  const opened = { header: writeHeader(folder, thermometerHeader()) };
+function recordOf({ header, events }: Long): ReturnType<typeof makeRunFolder> {
+  const folder = makeRunFolder(runs, made.date, header.modules.map(({ name }) => name).join('+'), 'long');
+  const opened = { header: writeHeader(folder, header) };
   const hash = newSealer();
   const lines = events.map((event) => {
     const line = JSON.stringify(event.event === 'opened' ? { ...event, ...opened } : event);
@@ -57,18 +104,29 @@ function recordOf(events: readonly TimedEvent[]): ReturnType<typeof makeRunFolde
   return folder;
 }
 
-describe('the report of a record of 100 000 readings', () => {
+function secondsSince(before: NodeJS.CpuUsage): number {
+  const { user, system } = process.cpuUsage(before);
+  return (user + system) / 1e6;
+}
+
+describe.each([
+  ['one module', ofOneModule, 5],
+  ['a group', ofAGroup, 9],
+  ['a string', ofAString, 7],
+])('the report of a record of 100 000 readings of %s', (_, long, atMost) => {
   let bytes: number;
-  let seconds: number;
+  let all: number;
+  let page: number;
   let readings: number;
 
   beforeAll(() => {
-    const folder = recordOf(eventsWith(100_000));
+    const folder = recordOf(long(100_000));
     const before = process.cpuUsage();
     const result = understand(folder.path);
+    const understood = process.cpuUsage();
     replaceFile(folder.report, runPage(result, made));
-    const { user, system } = process.cpuUsage(before);
-    seconds = (user + system) / 1e6;
+    page = secondsSince(understood);
+    all = secondsSince(before);
     bytes = statSync(folder.report).size;
     readings = result.evidence.readings;
     expect(result.integrity.kind).toBe('whole');
@@ -80,13 +138,14 @@ describe('the report of a record of 100 000 readings', () => {
     expect(bytes).toBeLessThan(3_000_000);
   });
 
-  // 3 s on a machine that has nothing else to do; here in time of the processor, as others may be busy beside it.
-  it('is written, from reading the record on, in little time', () => {
-    expect(seconds).toBeLessThan(9);
+  // In time of the processor, as others may be busy beside it, which slows this down too: two to three times what was measured so.
+  it('is written in less than 3 s, and with all that must be read and worked out before in little more', () => {
+    expect(page).toBeLessThan(3);
+    expect(all).toBeLessThan(atMost);
   });
 
   it('is hardly longer than that of a quarter of the readings', () => {
-    const quarter = understand(recordOf(eventsWith(25_000)).path);
+    const quarter = understand(recordOf(long(25_000)).path);
     expect(runPage(quarter, made).length).toBeGreaterThan(bytes / 2);
   });
 });
