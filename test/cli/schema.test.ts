@@ -1,8 +1,10 @@
 import { readdirSync, readFileSync } from 'node:fs';
+import { createRequire } from 'node:module';
 import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import {
   publishedSchema,
+  schemaFileName,
   schemaKinds,
   writtenKinds,
   type SchemaKind,
@@ -46,7 +48,17 @@ describe.each([...schemaKinds])('the schema called %s', (kind) => {
     const { status, stdout } = await railproof('schema', kind);
     expect(status).toBe(0);
     expect(JSON.parse(stdout)).toEqual(schema);
+    // Renewed with `-u`, by hand: where CI runs nothing is written.
+    await expect(stdout).toMatchFileSnapshot(`../../schemas/${schemaFileName(kind)}`);
   });
+});
+
+it('the package has a file of each, and of nothing else', () => {
+  expect(readdirSync('schemas').sort()).toEqual(['README.md', ...schemaKinds.map(schemaFileName)].sort());
+  const names = schemaKinds.map((kind) => `railproof/schemas/${schemaFileName(kind)}`);
+  for (const name of names) expect(() => createRequire(import.meta.url).resolve(name)).not.toThrow();
+  const { files } = JSON.parse(readFileSync('package.json', 'utf8')) as { files: readonly string[] };
+  expect(files).toContain('schemas');
 });
 
 it('without a kind all of them are listed, each with what it is', async () => {
