@@ -1,11 +1,26 @@
 import { allowedInWords, changeInWords, valueInWords } from '../judgement/change-in-words.js';
 import { changesMissed, type Compared, type Comparison } from '../judgement/compare.js';
 import { listed } from '../quantity/listed.js';
+import type { ComparedRecords } from './comparison.js';
+import { isWhole } from './result.js';
+
+/** The answer to what changed, and where a record ends too early that it can say no more than it holds. */
+export function answerInWords({ before, after, comparison }: ComparedRecords): readonly string[] {
+  const short = [...(isWhole(before) ? [] : ['earlier']), ...(isWhole(after) ? [] : ['later'])];
+  if (short.length === 0) return changesInWords(comparison);
+  const which = short.length === 1 ? `the ${short[0] ?? ''} record does` : 'both records do';
+  return [
+    ...changesInWords(comparison),
+    `What ${which} not show, not being whole or not having run to the end, may have changed.`,
+  ];
+}
 
 /** What changed and by how much, and what can't be told, in a sentence or a few; the worst first. */
-export function changesInWords({ findings, inNeither }: Comparison): readonly string[] {
+export function changesInWords({ findings, inNeither, sameModules }: Comparison): readonly string[] {
   const judged = findings.filter(({ outcome }) => outcome !== 'not-judged');
-  const wrong = judged.filter(({ outcome }) => outcome === 'does-not-conform').map(wrongly);
+  const wrong = judged
+    .filter(({ outcome }) => outcome === 'does-not-conform')
+    .map((one) => wrongly(one, sameModules));
   const became = judged.filter(isMeantChange).map(rightly);
   const open = [
     ...judged.filter(({ outcome }) => outcome === 'undecided').map(({ finding }) => finding),
@@ -18,7 +33,7 @@ export function changesInWords({ findings, inNeither }: Comparison): readonly st
     ...wrong,
     ...became,
     ...(open.length === 0 ? [] : [`It can't be told of ${listed(open)}.`]),
-    ...(kept === 0 ? [] : [rest(kept, wrong.length + became.length + open.length)]),
+    ...(kept === 0 ? [] : [rest(kept, wrong.length + became.length + open.length, sameModules)]),
   ];
 }
 
@@ -26,7 +41,7 @@ function isMeantChange({ outcome, expected }: Compared): boolean {
   return outcome === 'conforms' && expected?.kind === 'becomes';
 }
 
-function wrongly(compared: Compared): string {
+function wrongly(compared: Compared, sameModules: boolean): string {
   const { finding, expected, before, after, difference } = compared;
   if (expected?.kind === 'becomes') {
     const is = after === undefined ? 'unknown' : valueInWords(after);
@@ -34,9 +49,18 @@ function wrongly(compared: Compared): string {
     return `${finding} is ${still}${is} and must become ${expected.word}.`;
   }
   const change = changeInWords(compared);
-  if (difference === undefined || expected === undefined) return `${finding} changed ${change} and must not.`;
-  const [was, is] = [before, after].map((one) => (one === undefined ? '' : valueInWords(one)));
-  return `${finding} moved from ${was ?? ''} to ${is ?? ''}, by ${change}; allowed is ${allowedInWords(expected, compared)}.`;
+  const [was, is] = [before, after].map((one) => (one === undefined ? '' : valueInWords(one))) as [
+    string,
+    string,
+  ];
+  if (difference === undefined || expected === undefined)
+    return sameModules
+      ? `${finding} changed ${change} and must not.`
+      : `${finding} differs, ${was} in the earlier record and ${is} in the later one, and must not.`;
+  const moved = sameModules
+    ? `moved from ${was} to ${is}`
+    : `differs, ${was} in the earlier record and ${is} in the later one`;
+  return `${finding} ${moved}, by ${change}; allowed is ${allowedInWords(expected, compared)}.`;
 }
 
 function rightly({ finding, expected, verdict }: Compared): string {
@@ -46,7 +70,7 @@ function rightly({ finding, expected, verdict }: Compared): string {
     : `${finding} became ${word}, as it must.`;
 }
 
-function rest(kept: number, others: number): string {
+function rest(kept: number, others: number, sameModules: boolean): string {
   const what = others === 0 ? 'Nothing' : 'Nothing else';
-  return `${what} changed beyond its tolerance (${kept} compared).`;
+  return `${what} ${sameModules ? 'changed' : 'differs'} beyond its tolerance (${kept} compared).`;
 }

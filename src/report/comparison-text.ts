@@ -1,11 +1,11 @@
 import { allowedInWords, changeInWords, valueInWords } from '../judgement/change-in-words.js';
 import type { Compared } from '../judgement/compare.js';
 import { alignTable } from './align.js';
-import { changesInWords } from './changes.js';
+import { answerInWords } from './changes.js';
 import { comparisonWarnings } from './comparison-warnings.js';
-import { type ComparedRecords, outcomeOf, verdictWords } from './comparison.js';
+import { type ComparedRecords, outcomeOf, titleOf, verdictWords } from './comparison.js';
 import { printable, printableData } from './printable.js';
-import { modulesListed } from './record-heading.js';
+import { inMinutes } from './in-minutes.js';
 import type { Result } from './result.js';
 import type { Style } from './style.js';
 import { warningInWords } from './warnings.js';
@@ -27,21 +27,17 @@ export function comparisonAsText(records: ComparedRecords, style: Style, columns
     .concat('\n');
 }
 
-function heading({ before, after, tolerance }: ComparedRecords, style: Style): string {
+function heading(records: ComparedRecords, style: Style): string {
+  const { before, after, tolerance } = records;
   return [
-    style.strong(`${modulesOf(after)}: what changed`),
+    style.strong(printable(titleOf(records))),
     ...alignTable([rowOf('before', before), rowOf('after', after)], ['left', 'left', 'left', 'left']),
     `tolerance ${printable(tolerance.name)}: ${printable(tolerance.title)}`,
   ].join('\n');
 }
 
 function rowOf(when: string, { run, header }: Result): readonly string[] {
-  const began = header.began.replace('T', ' ').replace(/:\d\d(\.\d+)?Z$/, ' UTC');
-  return [when, printable(run), printable(header.procedure.name), printable(began)];
-}
-
-function modulesOf({ header }: Result): string {
-  return printable(modulesListed(header));
+  return [when, printable(run), printable(header.procedure.name), printable(inMinutes(header.began))];
 }
 
 const outcomes = {
@@ -51,8 +47,7 @@ const outcomes = {
 } as const;
 
 function answer(records: ComparedRecords, style: Style): string {
-  const sentences = changesInWords(printableData(records.comparison));
-  return [style.strong(outcomes[outcomeOf(records)]), ...sentences].join('\n');
+  return [style.strong(outcomes[outcomeOf(records)]), ...answerInWords(records).map(printable)].join('\n');
 }
 
 function table({ comparison }: ComparedRecords, style: Style, columns?: number): string {

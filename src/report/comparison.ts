@@ -1,7 +1,8 @@
 import type { Comparison } from '../judgement/compare.js';
 import type { Outcome } from '../judgement/decision.js';
 import type { Verdict } from '../judgement/verdict.js';
-import type { Result } from './result.js';
+import { modulesInWords } from './record-heading.js';
+import { isWhole, type Result } from './result.js';
 
 /** Two records understood and compared: everything that a report of it can say. */
 export interface ComparedRecords {
@@ -11,10 +12,19 @@ export interface ComparedRecords {
   readonly comparison: Comparison;
 }
 
-/** Nobody knows what the missing part of a record would have shown, so it can't say that nothing changed. */
+/**
+ * Nobody knows what the missing part of a record would have shown, be it lost or never measured because the run was
+ * stopped: so it can't say that nothing changed.
+ */
 export function outcomeOf({ before, after, comparison }: ComparedRecords): Outcome {
-  const whole = before.integrity.kind === 'whole' && after.integrity.kind === 'whole';
-  return comparison.outcome === 'conforms' && !whole ? 'undecided' : comparison.outcome;
+  const areWhole = isWhole(before) && isWhole(after);
+  return comparison.outcome === 'conforms' && !areWhole ? 'undecided' : comparison.outcome;
+}
+
+/** `K1: what changed`; of different modules `K1 and K1+K2: what differs`. */
+export function titleOf({ before, after, comparison }: ComparedRecords): string {
+  const [then, now] = [modulesInWords(before.header), modulesInWords(after.header)];
+  return comparison.sameModules ? `${now}: what changed` : `${then} and ${now}: what differs`;
 }
 
 /** What became of a finding, by the tolerance. */

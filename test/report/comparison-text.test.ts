@@ -56,6 +56,13 @@ In neither record: limit-style.
     expect(text(before, other)).toContain(
       'DIFFERENT MODULES: the earlier record is of K1, the later one of K2.',
     );
+    expect(text(before, other)).toMatch(/^K1 and K2: what differs\n/);
+    expect(text(before, other)).toContain('Nothing else differs beyond its tolerance (1 compared).');
+    const worse = { ...other, findings: damaged };
+    expect(text(before, worse)).toContain(
+      'droop-resistance differs, 18.00 mΩ in the earlier record and 36.00 mΩ in the later one, by',
+    );
+    expect(text(before, worse)).not.toMatch(/moved|Nothing (else )?changed/);
   });
 
   it('says which record is damaged, cut off or stopped, and never that all is well by one that is not whole', () => {
@@ -83,6 +90,11 @@ In neither record: limit-style.
       evidence: { ...evidence, ended: { ...ended, how: 'stopped', reason: 'the operator' } },
     });
     expect(text(before, stopped)).toContain('STOPPED: after: the operator');
+    expect(outcomeOf(recordsOf(before, stopped))).toBe('undecided');
+    expect(text(before, stopped)).toContain('Not all can be told.');
+    expect(text(before, stopped)).toContain('What the later record does not show, not being whole');
+    expect(text(stopped, stopped)).toContain('What both records do not show, not being whole');
+    expect(text(before, whole)).not.toContain('does not show');
   });
 
   it('lets nothing in a record steer the terminal', () => {

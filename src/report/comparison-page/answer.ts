@@ -1,5 +1,5 @@
 import type { Outcome } from '../../judgement/decision.js';
-import { changesInWords } from '../changes.js';
+import { answerInWords } from '../changes.js';
 import { comparisonWarnings } from '../comparison-warnings.js';
 import { type ComparedRecords, outcomeOf } from '../comparison.js';
 import { type Content, element } from '../page/markup.js';
@@ -14,7 +14,7 @@ const standings: Readonly<Record<Outcome, Standing>> = {
 
 /** What must be known first, then whether all is as it should be, and what is not. */
 export function comparisonAnswer(records: ComparedRecords): Content {
-  const sentences = changesInWords(records.comparison);
+  const sentences = answerInWords(records);
   const { name, title } = records.tolerance;
   return [
     comparisonWarnings(records).map(({ word, text }) =>

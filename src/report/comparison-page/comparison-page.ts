@@ -1,6 +1,5 @@
-import type { ComparedRecords } from '../comparison.js';
+import { type ComparedRecords, titleOf } from '../comparison.js';
 import { type Made, pageText } from '../page/page.js';
-import { modulesInWords } from '../record-heading.js';
 import { comparisonAnswer } from './answer.js';
 import { basisSection } from './basis.js';
 import { changesSection } from './changes-section.js';
@@ -28,11 +27,4 @@ export function comparisonPage(records: ComparedRecords, made: Made): string {
     made,
     pageKind: 'comparison',
   });
-}
-
-function titleOf({ before, after, comparison }: ComparedRecords): string {
-  const [then, now] = [before, after].map(({ header }) => modulesInWords(header));
-  return comparison.sameModules
-    ? `${now ?? ''}: what changed`
-    : `${then ?? ''} and ${now ?? ''}: what differs`;
 }
