@@ -1,6 +1,6 @@
 import { resolve } from 'node:path';
 import { sayWhatIsOn } from '../bench/found-on.js';
-import { type OpenBench, openBench } from '../bench/open-bench.js';
+import type { OpenBench } from '../bench/open-bench.js';
 import { JournalWriter } from '../record/journal-writer.js';
 import { journalFormat, type JournalEvent } from '../record/journal-event.js';
 import { writeReadingsCsv } from '../record/readings-csv.js';
@@ -16,6 +16,7 @@ import type { Operator } from '../steps/operator.js';
 import { headerOf } from './header-of.js';
 import type { LoadedPlan } from './load-plan.js';
 import { madeAt } from './made-at.js';
+import { openForRun } from './open-for-run.js';
 import type { Resumption } from './resume-plan.js';
 import { instrumentsInWords, versionsInWords } from './resume-shown.js';
 import type { Watchman } from './watchman.js';
@@ -80,20 +81,19 @@ async function performWatched(
     options.watch.noticed(text);
     append({ event: 'notice', text });
   };
-  const bench = await openBench({
+  const bench = await openForRun({
     bench: plan.bench,
     drivers: plan.drivers,
     ceilings: plan.ceilings,
     connect: world.connect,
     clock: world.clock,
-    signal: options.signal,
+    ...{ signal: options.signal, hurry: options.hurry },
     onInput: (state, confirmed) => {
       watchman?.input(state, confirmed);
       append({ event: 'input', state, confirmed });
     },
     onNotice: notice,
   });
-  options.hurry.addEventListener('abort', () => void bench.cut(), { once: true });
   try {
     const { folder, journal } = await beginRecord(loaded, world, bench, options.runs);
     try {

@@ -16,6 +16,7 @@ import type { RunSoFar } from '../progress/run-so-far.js';
 import { say } from '../say.js';
 import type { StopWishes } from '../stop-signals.js';
 import type { Streams } from '../streams.js';
+import { whenAborted } from '../when-aborted.js';
 import { firstState } from './first-state.js';
 import { operatorAtBoth } from './operator-at-both.js';
 import { viewProgress } from './view-progress.js';
@@ -67,7 +68,7 @@ export async function openRunView(
     },
   });
   tellAddress(view.address);
-  stop.signal.addEventListener('abort', () => {
+  whenAborted(stop.signal, () => {
     view.show({ kind: 'stopping' });
   });
   return {

@@ -1,6 +1,6 @@
 import { FoundOnError } from '../../bench/found-on.js';
 import { messageOf } from '../../errors/message-of.js';
-import { RailproofError } from '../../errors/railproof-error.js';
+import { exitCodeOf, exitCodes, RailproofError } from '../../errors/railproof-error.js';
 import { capitalised } from '../../quantity/capitalised.js';
 import { answer } from '../../report/answer.js';
 import type { ViewedEnd } from '../../view/view-state.js';
@@ -29,7 +29,7 @@ export function notBegun(error: unknown): ViewedEnd {
   const advice = error instanceof RailproofError ? error.advice : undefined;
   const isOn = error instanceof FoundOnError;
   return {
-    how: 'failed',
+    how: exitCodeOf(error) === exitCodes.stopped ? 'stopped' : 'failed',
     reason: messageOf(error),
     answer: advice === undefined || isOn ? [] : [capitalised(advice)],
     outcome: 'not-judged',

@@ -73,6 +73,13 @@ describe('the end of a run on a page', () => {
     });
   });
 
+  it('of a run that was stopped before it began says so, and of none that it failed', () => {
+    expect(notBegun(new StoppedByOperator('stopped with Ctrl-C'))).toMatchObject({
+      how: 'stopped',
+      reason: 'stopped with Ctrl-C',
+    });
+  });
+
   it('of a run that did not begin says what to do next', () => {
     expect(notBegun(new OperatorAbsentError(['its wiring'])).answer).toEqual([
       expect.stringMatching(/^Run it in a terminal/),
