@@ -20,11 +20,11 @@ export interface Difference {
   readonly value: number;
   /** That of a difference of temperatures is in K; all others are in the unit of the finding. */
   readonly dimension: Dimension;
-  /** Null where neither side has one. */
+  /** Null unless both sides have one. */
   readonly standardUncertainty: number | null;
-  /** 95 %: U = √(U₁² + U₂²). Null where neither side has one. */
+  /** 95 %: U = √(U₁² + U₂²). Null unless both sides have one: half of it would promise too much. */
   readonly expanded: number | null;
-  /** Δ/√(U₁² + U₂²); null where there is no uncertainty to measure the difference by, or one side is a bound only. */
+  /** Δ/√(U₁² + U₂²); null where either uncertainty is not known, both are nothing, or one side is a bound only. */
   readonly normalizedError: number | null;
   /** Of the earlier value; null where that is not clearly other than nothing. */
   readonly share: Ratio | null;
@@ -48,7 +48,8 @@ function isMeasured(finding: Comparable): finding is Measured {
  * The difference with its uncertainty. Both uncertainties are taken as independent (JCGM 100:2008, 5.1.2).
  * Where both records were made with the same instruments part of their error is common to both and falls
  * out of the difference, so what is given is rather too wide: the cautious side. The normalized difference
- * E_n is that of comparisons between laboratories (ISO/IEC 17043, ISO 13528: satisfactory up to 1).
+ * E_n is that of comparisons between laboratories (ISO/IEC 17043, ISO 13528: satisfactory up to 1), and needs both
+ * expanded uncertainties.
  */
 export function differenceOf(before: Measured, after: Measured): Difference {
   const value = after.value - before.value;
@@ -65,7 +66,7 @@ export function differenceOf(before: Measured, after: Measured): Difference {
   };
 }
 
-/** Root of the sum of squares; one that is not known adds nothing. */
+/** Root of the sum of squares; where one of them is not known the sum is not either. */
 function together(one: number | null, other: number | null): number | null {
-  return one === null && other === null ? null : Math.hypot(one ?? 0, other ?? 0);
+  return one === null || other === null ? null : Math.hypot(one, other);
 }

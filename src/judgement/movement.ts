@@ -5,7 +5,7 @@ import type { Comparable, Difference } from './difference.js';
  * Whether a finding is other than it was, whatever may be:
  * - `moved`: by more than both uncertainties together leave open, or from one word to another;
  * - `as-it-was`: not by more than that;
- * - `as-it-stands`: no uncertainty is known of it, so nobody can say by how much chance alone moves it;
+ * - `as-it-stands`: its uncertainty is not known in both records, so nobody can say by how much chance alone moves it;
  * - `not-told`: only one record has it, it could not be told, or it is a least value that may be more.
  */
 export type Movement = 'moved' | 'as-it-was' | 'as-it-stands' | 'not-told';
@@ -24,14 +24,21 @@ export function movementOf({ before, after, difference, verdict }: Compared): Mo
 }
 
 function movementOfWords(before: Comparable, after: Comparable): Movement {
+  if (before.value === 'undetermined' || after.value === 'undetermined') return 'not-told';
   const areWords = typeof before.value === 'string' && typeof after.value === 'string';
-  if (!areWords || before.value === 'undetermined' || after.value === 'undetermined') return 'not-told';
-  return before.value === after.value ? 'as-it-was' : 'moved';
+  if (areWords) return before.value === after.value ? 'as-it-was' : 'moved';
+  return isChosen(before) && isChosen(after) ? 'as-it-stands' : 'not-told';
+}
+
+/** A recommendation is a value or a word such as `none`; neither has an uncertainty. */
+function isChosen({ standardUncertainty }: Comparable): boolean {
+  return standardUncertainty === null;
 }
 
 /** Of a least value only that can be told which lies on the other side of it. */
 function movementOfBounds(before: Comparable, after: Comparable, { value, expanded }: Difference): Movement {
   if (before.bound !== undefined && after.bound !== undefined) return 'not-told';
   const away = before.bound === undefined ? value : -value;
-  return away > (expanded ?? 0) ? 'moved' : 'not-told';
+  if (expanded === null) return away > 0 ? 'as-it-stands' : 'not-told';
+  return away > expanded ? 'moved' : 'not-told';
 }

@@ -1,4 +1,5 @@
 import type { Expected } from '../record/baseline.js';
+import { expandedOf } from '../analysis/finding.js';
 import { decide } from '../statistics/guarded-decision.js';
 import type { Outcome } from './decision.js';
 import { bothMeasured, type Comparable, type Difference, type Measured } from './difference.js';
@@ -60,13 +61,17 @@ export function judgeOne(
 
 /**
  * The difference against its tolerance, guarded by its expanded uncertainty on both sides: unchanged where
- * |Δ| + U is within, changed where |Δ| − U is beyond, else it can't be told.
+ * |Δ| + U is within, changed where |Δ| − U is beyond, else it can't be told. Where one side's uncertainty is not
+ * known there is no guard band, and nothing is decided without it.
  */
 function judgeWithin(
   [before, after]: readonly [Measured, Measured],
   difference: Difference,
   tolerance: number,
 ): Judged {
+  const known = [before, after].filter((finding) => expandedOf(finding) !== null).length;
+  if (known === 1)
+    return told('cannot-tell', 'undecided', 'its uncertainty is known in one of the two records only');
   const { outcome, probability } = decide({
     value: difference.value,
     standardUncertainty: difference.standardUncertainty ?? 0,
@@ -75,10 +80,10 @@ function judgeWithin(
   });
   const bounded = judgeBounds(before, after, { outcome, difference: difference.value });
   if (bounded !== undefined) return bounded;
-  // A recommendation, or what a person read, has no distribution to be within: it is taken as it stands.
-  const known = before.standardUncertainty !== null && after.standardUncertainty !== null;
-  const note = known ? '' : 'no uncertainty is known of it: taken as it stands';
-  return { verdict: verdictOf[outcome], outcome, probability: known ? probability : null, note };
+  // A recommendation is a choice and has no distribution to be within: it is taken as it stands.
+  return known === 0
+    ? told(verdictOf[outcome], outcome, 'no uncertainty is known of it: taken as it stands')
+    : { verdict: verdictOf[outcome], outcome, probability, note: '' };
 }
 
 const verdictOf = {

@@ -78,6 +78,24 @@ describe('a quantity in two records', () => {
     expect(compared(choice(4), choice(3), share(0.05)).verdict).toBe('changed');
   });
 
+  it.each([
+    ['no further than is allowed', 5],
+    ['further than is allowed', 9],
+  ])('whose uncertainty one record alone knows is not judged without a guard band: %s', (_, value) => {
+    const bare = (at: number): Finding => amps(at, 0, { standardUncertainty: null, interval: null });
+    for (const one of [
+      compared(bare(5), amps(value, 0.04), share(0.05)),
+      compared(amps(5, 0.04), bare(value), share(0.05)),
+    ]) {
+      expect(one).toMatchObject({
+        verdict: 'cannot-tell',
+        outcome: 'undecided',
+        probability: null,
+        note: 'its uncertainty is known in one of the two records only',
+      });
+    }
+  });
+
   it('that is a word in the other record can not be told', () => {
     const words = inWords('usable-current', 'plenty', { step: 1 });
     expect(compared(amps(5, 0.03), words, share(0.05))).toMatchObject({

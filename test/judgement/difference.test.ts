@@ -42,7 +42,18 @@ describe('the difference of a finding between two records', () => {
     });
     expect(differenceOf(found(4, 0), found(4, 0))).toMatchObject({ expanded: 0, normalizedError: null });
     expect(differenceOf(found(4, 0), found(5, 0)).normalizedError).toBeNull();
-    expect(differenceOf(found(4, null), found(5, 0.5))).toMatchObject({ expanded: 0.5, normalizedError: 2 });
+    // E_n of ISO 13528 needs both expanded uncertainties: half of one would make it too large.
+    for (const [before, after] of [
+      [found(4, null), found(5, 0.5)],
+      [found(4, 0.5), found(5, null)],
+    ] as const) {
+      expect(differenceOf(before, after)).toMatchObject({
+        value: 1,
+        expanded: null,
+        standardUncertainty: null,
+        normalizedError: null,
+      });
+    }
   });
 
   it('is no share of an earlier value that may be nothing', () => {

@@ -50,6 +50,25 @@ describe('a finding', () => {
     expect(moved(bare(0.018), bare(0.03), 0.1)).toBe('moved');
   });
 
+  it('whose uncertainty one record alone knows is taken as it stands, from either side', () => {
+    expect(moved(bare(0.018), droopOf(0.03))).toBe('as-it-stands');
+    expect(moved(droopOf(0.018), bare(0.03))).toBe('as-it-stands');
+  });
+
+  it('that is chosen, and was a value and is a word now, is taken as it stands', () => {
+    const word = (said: string): Finding => ({ ...bare(0), value: said, dimension: null });
+    expect(moved(bare(0.22), word('none'))).toBe('as-it-stands');
+    expect(moved(word('none'), bare(0.22))).toBe('as-it-stands');
+    expect(moved(bare(0.22), word('undetermined'))).toBe('not-told');
+    expect(moved(droopOf(0.018), word('none'))).toBe('not-told');
+  });
+
+  it('that is a least value without an uncertainty is taken as it stands on the far side', () => {
+    const leastBare = (value: number): Finding => ({ ...bare(value), bound: 'least' });
+    expect(moved(leastBare(0.02), bare(0.018))).toBe('as-it-stands');
+    expect(moved(leastBare(0.02), bare(0.025))).toBe('not-told');
+  });
+
   it('that is a least value moved only where the other lies on its far side', () => {
     expect(moved(least(0.02), droopOf(0.018))).toBe('moved');
     expect(moved(least(0.02), droopOf(0.025))).toBe('not-told');
