@@ -107,6 +107,18 @@ describe.skipIf(isMissing)('a build sheet in a browser (needs /usr/bin/chromium)
     });
   });
 
+  it('keeps all of a note in its own column on a phone', async () => {
+    const { page } = await opened('notes', buildPage(madeStages(), made));
+    await page.setViewportSize({ width: 360, height: 800 });
+    const within = await page.evaluate<number[]>(
+      "[...document.querySelectorAll('.notes td > *')].map((each) => each.getBoundingClientRect().left - each.parentElement.getBoundingClientRect().left)",
+    );
+    expect(within.length).toBeGreaterThan(0);
+    // The names of the columns stand in the first 7rem.
+    for (const left of within) expect(left).toBeGreaterThanOrEqual(112);
+    await page.close();
+  });
+
   it('shows a hostile name and a hostile record as text', async () => {
     const build = madeParallel({}, [hostile, 'K2']);
     const concerns = [{ ...build.concerns[0], run: hostile, text: hostile }] as typeof build.concerns;

@@ -131,6 +131,7 @@ td.number,td.fixed{white-space:nowrap}
 td.text{min-width:9.5rem}
 td.long{min-width:13rem}
 .state{font-weight:600;white-space:nowrap;color:var(--c,inherit)}
+td.long .state{white-space:normal}
 figure{margin:1.4rem 0;break-inside:avoid}
 figcaption{font-size:.9rem;max-width:40rem}
 svg{display:block;max-width:100%;height:auto}
@@ -182,26 +183,31 @@ h1{font-size:1.6rem}
 .notes th,.notes td{padding:.1rem 0;border:0}
 .notes td{display:grid;grid-template-columns:7rem 1fr;gap:.6rem;text-align:left;white-space:normal}
 .notes td::before{content:attr(data-head);color:var(--soft)}
+.notes td>*{grid-column:2}
 .notes td:empty{display:none}
 }
 @page{size:A4;margin:16mm 15mm 18mm}
 @media print{
 :root{color-scheme:light;${variables(light)};--paper:#fff}
 html{font-size:9.5pt}
-.sign dd{height:1.1cm}
+.sign dd{height:.85cm}
+td .code{font-size:.74em}
+section:has(.sign){break-inside:avoid}
 body{line-height:1.4}
 p,ul,ol,figcaption{max-width:none}
 header,main,footer{max-width:none;padding-inline:0}
 header{padding-top:0}
-section{margin-top:1.5rem}
+section{margin-top:1.2rem}
 .standing{margin-top:1rem;padding:.8rem 1rem}
 figure,.wide{margin-block:.7rem}
 th,td{padding-block:.22rem}
-footer{margin-top:1.5rem;padding-bottom:0;break-before:avoid}
+footer{margin-top:.6rem;padding-block:.3rem 0;break-before:avoid}
 tr,li,figure,.standing,.facts{break-inside:avoid}
+tbody tr:first-child:not(:last-child){break-after:avoid}
+tbody tr:last-child:not(:first-child){break-before:avoid}
 thead{display:table-header-group;break-after:avoid}
 caption{break-after:avoid}
-h1{font-size:20pt}h2{font-size:13pt}h3{font-size:11pt}
+h1{font-size:17pt}h2{font-size:13pt}h3{font-size:11pt}
 .wide{overflow:visible}
 .chart{width:100%;max-width:13.5cm;min-width:0}
 .diagram{max-height:10.5cm;width:auto}
