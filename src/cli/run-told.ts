@@ -22,6 +22,8 @@ export function tell(
   const { understood, ending, folder, status } = performed;
   if (understood.kind === 'result') streams.stdout.write(shown(understood.result, json, streams));
   streams.stderr.write(`record: ${printable(folder.path)}\n`);
+  if (understood.kind === 'result' && understood.unkept === undefined)
+    streams.stderr.write(`report: ${printable(folder.report)}\n`);
   if (ending.how !== 'completed') say(streams.stderr, errorText(atDriverLine(ending.error, drivers)));
   if (understood.kind === 'error') say(streams.stderr, errorText(understood.error));
   if (understood.kind === 'result' && understood.unkept !== undefined) {

@@ -4,6 +4,12 @@ import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { publishedSchema, type WrittenKind } from '../../src/cli/published-schemas.js';
 import { mismatches, validatorOf } from '../json-schema-check.js';
+import { realClock } from '../../src/clock/real-clock.js';
+import { formatAddress } from '../../src/files/connection-address.js';
+import { quirkyInstrument } from '../instrument/quirks/quirky-instrument.js';
+import { quirkyLoad } from '../instrument/quirks/quirky-load.js';
+import { serveQuirkyTcp } from '../instrument/quirks/serve-quirky.js';
+import { railproof as atSocket } from './at-a-socket.js';
 import { railproof } from './in-process.js';
 import { drawer, keptOf } from './kept-drawer.js';
 
@@ -39,6 +45,19 @@ it.each(commands)('%s: what is printed is to its schema: %j', async (kind, args)
     expect(mismatches(check, { ...printed, [key]: { odd: 1 } })).not.toEqual([]);
   }
 });
+
+it('match: what is printed is to its schema, of an instrument that answers and of one that does not', async () => {
+  const check = validatorOf(publishedSchema('match'));
+  const answering = formatAddress(await serveQuirkyTcp(quirkyInstrument({}, quirkyLoad().knows, realClock)));
+  const deaf = formatAddress(await serveQuirkyTcp(quirkyInstrument({}, () => undefined, realClock)));
+  for (const [address, answered] of [[answering, true] as const, [deaf, false] as const]) {
+    const { stdout } = await atSocket('drivers', '--match', address, '--json');
+    const printed = JSON.parse(stdout) as object;
+    expect(printed).toMatchObject({ format: 'railproof/match 1', answered });
+    expect(mismatches(check, printed)).toEqual([]);
+    expect(mismatches(check, { ...printed, 'families-of-old': 1 })).not.toEqual([]);
+  }
+}, 120_000);
 
 describe('a run that keeps its trace', () => {
   const folder = mkdtempSync(join(tmpdir(), 'railproof-'));
