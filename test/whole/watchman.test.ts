@@ -14,11 +14,13 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, describe, expect, it, onTestFinished, vi } from 'vitest';
 import { orderText } from '../../src/bench/watchman-order.js';
+import { publishedSchema } from '../../src/cli/published-schemas.js';
 import { planDrivers, readBenchDrivers } from '../../src/cli/wiring.js';
 import { readBench } from '../../src/files/read-bench.js';
 import type { Connection } from '../../src/instrument/connection.js';
 import { openSerial } from '../../src/instrument/serial-connection.js';
 import type { WatchmanReport } from '../../src/record/watchman-report.js';
+import { mismatches, validatorOf } from '../json-schema-check.js';
 import { askLoad, journalOf, until } from './at-the-bench.js';
 import { oneClientAtATime } from './one-client.js';
 import { ended, railproof, start } from './railproof.js';
@@ -75,7 +77,9 @@ function recordIn(runs: string): string {
 }
 
 function reportIn(runs: string): WatchmanReport {
-  return JSON.parse(readFileSync(join(recordIn(runs), 'watchman.json'), 'utf8')) as WatchmanReport;
+  const report = JSON.parse(readFileSync(join(recordIn(runs), 'watchman.json'), 'utf8')) as WatchmanReport;
+  expect(mismatches(validatorOf(publishedSchema('watchman')), report)).toEqual([]);
+  return report;
 }
 
 function nobodyWatches(pid: number | undefined): Promise<void> {
