@@ -3,6 +3,7 @@ import { findingNamed } from '../../analysis/finding.js';
 import { asGiven } from '../../analysis/in-words.js';
 import { ratedOf } from '../../analysis/rated.js';
 import { lineAt, type RegulationLine } from '../../analysis/regulation-line.js';
+import { capitalised } from '../../quantity/capitalised.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
 import type { Amperes } from '../../quantity/quantity.js';
 import { roundedDown } from '../../quantity/rounded-down.js';
@@ -14,7 +15,7 @@ import type { Markup } from '../page/markup.js';
 import { isWhole, type Result } from '../result.js';
 import { figure } from '../page/figure.js';
 import { droppedPoints, heldSorts, idleSort, isSoakAlone } from './curve-points.js';
-import { amps, foundInWords, volts } from './in-words.js';
+import { allowedAs, amps, foundInWords, volts } from './in-words.js';
 
 /** A line and its interval are bent: so many places of it are reckoned. */
 const places = 61;
@@ -133,7 +134,7 @@ function currentMarks(result: Result, { bracket }: CurveSeen): readonly Vertical
   return [
     // Of a test that was not finished nothing that looks like a recommendation is shown.
     ...(isWhole(result)
-      ? mark('recommended-current', (value) => `recommended ${roundedDown(value, 'current')}`)
+      ? mark('recommended-current', (value) => `${allowedAs(result)} ${roundedDown(value, 'current')}`)
       : []),
     ...mark(
       'usable-current',
@@ -177,7 +178,7 @@ function inWords(result: Result, seen: CurveSeen, held: readonly PointSort[]): r
     ...(() => {
       const value = findingNamed(findings, 'recommended-current')?.value;
       return typeof value === 'number' && isWhole(result)
-        ? [`Recommended: ${roundedDown(value, 'current')}.`]
+        ? [`${capitalised(allowedAs(result))}: ${roundedDown(value, 'current')}.`]
         : [];
     })(),
     `The label says ${asGiven(plate.voltage, 'voltage')} and ${asGiven(plate.current, 'current')}.`,

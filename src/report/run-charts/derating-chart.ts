@@ -7,7 +7,7 @@ import { type Fall, fallingChart } from '../chart/falling-chart.js';
 import type { Markup } from '../page/markup.js';
 import type { Result } from '../result.js';
 import { figure } from '../page/figure.js';
-import { amps } from './in-words.js';
+import { allowedAs, amps } from './in-words.js';
 
 const title = 'From the measured limit to the recommendation';
 
@@ -15,12 +15,13 @@ const title = 'From the measured limit to the recommendation';
  * How the recommended current comes of the usable one: a bar for what each factor of the derating takes away, with
  * its reason. Undefined where nothing is recommended.
  */
-export function deratingFigure({ findings, header }: Result): Markup | undefined {
+export function deratingFigure(result: Result): Markup | undefined {
+  const { findings, header } = result;
   const usable = findingNamed(findings, 'usable-current');
   const recommended = findingNamed(findings, 'recommended-current');
   if (typeof usable?.value !== 'number' || typeof recommended?.value !== 'number') return undefined;
   const plate = ratedOf(header).current;
-  const falls = fallsOf(usable, usable.value, recommended);
+  const falls = fallsOf(usable, usable.value, recommended, `${allowedAs(result)}, continuously`);
   return figure(
     title,
     fallingChart({
@@ -36,7 +37,7 @@ export function deratingFigure({ findings, header }: Result): Markup | undefined
   );
 }
 
-function fallsOf(usable: Finding, limit: Amperes, recommended: Finding): readonly Fall[] {
+function fallsOf(usable: Finding, limit: Amperes, recommended: Finding, allowed: string): readonly Fall[] {
   let current = limit;
   const steps = recommended.factors.map((factor): Fall => {
     const from = current;
@@ -62,7 +63,7 @@ function fallsOf(usable: Finding, limit: Amperes, recommended: Finding): readonl
     },
     ...steps,
     {
-      name: 'recommended, continuously',
+      name: allowed,
       says: roundedDown(Number(recommended.value), 'current'),
       because: '',
       from: current,

@@ -2,6 +2,7 @@ import type { StepEvidence } from '../../analysis/evidence.js';
 import type { Comparable } from '../../judgement/difference.js';
 import { formatInterval, formatQuantity } from '../../quantity/format-quantity.js';
 import type { Amperes, Dimension, Volts } from '../../quantity/quantity.js';
+import type { Result } from '../result.js';
 
 export function amps(value: Amperes): string {
   return formatQuantity(value, 'current', { significant: 4 });
@@ -34,4 +35,9 @@ export function betweenInWords(value: number, from: number, to: number, dimensio
 /** `step 2, load-ramp`. */
 export function stepInWords({ step, kind }: Pick<StepEvidence, 'step' | 'kind'>): string {
   return `step ${step}, ${kind}`;
+}
+
+/** What a recommendation is called on a chart, on which it may be looked at alone: of what does not conform it is none. */
+export function allowedAs({ outcome }: Result): string {
+  return outcome === 'does-not-conform' ? 'by its limits alone' : 'recommended';
 }

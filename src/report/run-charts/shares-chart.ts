@@ -22,7 +22,7 @@ import { hoggingInWords } from '../group-answer.js';
 import type { Markup } from '../page/markup.js';
 import { isWhole, type Result } from '../result.js';
 import { figure } from '../page/figure.js';
-import { amps, foundInWords, stepInWords } from './in-words.js';
+import { allowedAs, amps, foundInWords, stepInWords } from './in-words.js';
 import { lineThrough, memberLook, once } from './member-look.js';
 
 const title = 'Who carries how much';
@@ -134,7 +134,7 @@ function marksOf(result: Result, { saturated }: SharingSeen): readonly VerticalM
   const recommended = findingNamed(result.findings, 'recommended-current')?.value;
   return [
     ...(typeof recommended === 'number' && recommended > 0 && isWhole(result)
-      ? [{ at: recommended, label: `recommended ${roundedDown(recommended, 'current')}` }]
+      ? [{ at: recommended, label: `${allowedAs(result)} ${roundedDown(recommended, 'current')}` }]
       : []),
     ...(saturated === undefined
       ? []

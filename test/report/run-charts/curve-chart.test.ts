@@ -166,4 +166,13 @@ describe('the curve of a record that holds little', () => {
     expect(plain(figure.texts)).not.toContain('rated 24 V');
     expect(figure.description.replaceAll('\u00a0', ' ')).toContain('The label says 24 V');
   });
+
+  it('calls nothing a recommendation where it does not conform', () => {
+    const { texts, description } = read({
+      ...madeResult([idle, upAndBack, search]),
+      outcome: 'does-not-conform',
+    });
+    expect(plain(texts)).toContain('by its limits alone 4.00 A');
+    expect([...texts, description].join(' ')).not.toMatch(/recommended/i);
+  });
 });

@@ -75,7 +75,8 @@ describe('the way from the measured limit to the recommendation', () => {
     }
     expect(svg).toMatch(/× 0\.8, leaves \d\.\d+ A/);
     expect(svg).toContain('takes nothing away');
-    expect(svg).toContain('recommended, continuously');
+    expect(svg).toContain('by its limits alone, continuously');
+    expect(bars({ ...resultOf(), outcome: 'conforms' }).svg).toContain('recommended, continuously');
     expect(svg).not.toMatch(/NaN|undefined|Infinity/);
   });
 
