@@ -1,5 +1,6 @@
-import type { Amperes } from '../quantity/quantity.js';
+import type { Amperes, Volts } from '../quantity/quantity.js';
 import type { LineFit } from '../statistics/line-fit.js';
+import { combine, type Contribution } from '../statistics/uncertainty-budget.js';
 import { bothWaysNote } from './both-ways.js';
 import type { CurvePoint } from './curve.js';
 import type { Evidence } from './evidence.js';
@@ -70,26 +71,56 @@ function droopFinding(
 }
 
 function interceptFinding(evidence: Evidence, line: RegulationLine, step: number | null): Finding {
-  const { fit } = line;
-  const { instrument: voltage } = moduleVoltageErrors(evidence.header);
-  const current = promisedErrors(evidence.header, 'load', 'current');
   return measured(
     'open-circuit-voltage',
     'voltage',
-    fit.intercept,
-    [
-      {
-        name: 'scatter about the line',
-        kind: 'A',
-        uncertainty: lineAt(line, 0).uncertainty,
-        degreesOfFreedom: fit.degreesOfFreedom,
-      },
-      promised(`${voltage.of}, gain`, voltage.gain * fit.intercept),
-      promised(`${voltage.of}, offset`, voltage.offset),
-      promised(`${current.of}, offset`, current.offset * readSlope(evidence, fit)),
-    ],
+    line.fit.intercept,
+    lineVoltageBudget(evidence, line, 0),
     { step, note: 'by extending the line to no load' },
   );
+}
+
+/** The voltage that the line has at a current, ± all that stands behind it, 95 %. */
+export function lineVoltage(
+  evidence: Pick<Evidence, 'header'>,
+  line: RegulationLine,
+  at: Amperes,
+): { readonly value: Volts; readonly expanded: Volts } {
+  const { expanded } = combine(lineVoltageBudget(evidence, line, at));
+  return { value: lineAt(line, at).value, expanded };
+}
+
+/**
+ * The budget of the voltage that the line has at a current: the scatter of its points, what the instruments may be
+ * wrong by, and, where what the leads lose was added by calculation, what their resistance may be wrong by.
+ */
+function lineVoltageBudget(
+  evidence: Pick<Evidence, 'header'>,
+  line: RegulationLine,
+  at: Amperes,
+): readonly Contribution[] {
+  const { fit } = line;
+  const { instrument: voltage, leads } = moduleVoltageErrors(evidence.header);
+  const current = promisedErrors(evidence.header, 'load', 'current');
+  const slopeRead = readSlope(evidence, fit);
+  const scatter = {
+    name: 'scatter about the line',
+    kind: 'A',
+    uncertainty: lineAt(line, at).uncertainty,
+    degreesOfFreedom: fit.degreesOfFreedom,
+  } as const;
+  const always = [
+    scatter,
+    promised(`${voltage.of}, gain`, voltage.gain * (fit.intercept + slopeRead * at)),
+    promised(`${voltage.of}, offset`, voltage.offset),
+    promised(`${current.of}, offset`, current.offset * slopeRead),
+  ];
+  if (at === 0) return always;
+  return [
+    ...always,
+    promised(`${current.of}, gain`, current.gain * slopeRead * at),
+    ...(leads === 0 ? [] : [promised('resistance of the leads', leads * at)]),
+  ];
 }
 
 /** IEC 61204: the fall of the voltage from no load to rated current, over the rated voltage. */
@@ -120,6 +151,6 @@ function stillNote(fit: LineFit, slopeRead: number): string {
 }
 
 /** Of the voltage as the instrument read it, before what the leads lose was added by calculation; in Ω. */
-function readSlope({ header: { bench } }: Evidence, fit: LineFit): number {
+function readSlope({ header: { bench } }: Pick<Evidence, 'header'>, fit: LineFit): number {
   return bench.voltageFrom === 'load-terminals' ? fit.slope - bench.leads.resistance : fit.slope;
 }
