@@ -1,5 +1,5 @@
 import { line, name, quantity, quantityOrWord } from '../files/building-blocks.js';
-import { changeDate } from '../files/module-schema.js';
+import { ambientOnLabel, changeDate } from '../files/module-schema.js';
 import type { Module } from '../files/module.js';
 import { readBy } from './answer-readers.js';
 import type { Questions } from './questions.js';
@@ -48,7 +48,7 @@ async function askLabel(questions: Questions): Promise<Module['rated']> {
     ask: 'In how warm air may it stand, by its label?',
     why: 'With its unit: 40 degC. A report sets it beside the air it was tested in.',
     usual: { value: undefined, words: 'the label does not say' },
-    read: readBy(quantity('temperature', '')),
+    read: readBy(ambientOnLabel),
   });
   return { voltage, current, ...(ambient === undefined ? {} : { ambient }) };
 }

@@ -14,6 +14,12 @@ const change = z.strictObject({
   what: line('What was done.').min(1),
 });
 
+/** No label names air beyond these: one that seems to is a slip of the pen, such as 400 for 40. */
+export const ambientOnLabel = quantity('temperature', 'The highest ambient temperature on the label.', {
+  least: -50,
+  most: 150,
+});
+
 /** A module file, as an editor sees it and as the program reads it. */
 export const moduleSchema: z.ZodType<Module> = z
   .strictObject({
@@ -24,7 +30,7 @@ export const moduleSchema: z.ZodType<Module> = z
       .strictObject({
         voltage: quantity('voltage', 'The voltage on the label.', { above: 0 }),
         current: quantity('current', 'The current on the label.', { above: 0 }),
-        ambient: quantity('temperature', 'The highest ambient temperature on the label.').exactOptional(),
+        ambient: ambientOnLabel.exactOptional(),
       })
       .describe('What the label says.'),
     'protection-class': choice(['I', 'II'], 'IEC 61140: I has an earthed plug, II has not.'),

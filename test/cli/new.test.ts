@@ -93,6 +93,32 @@ describe('railproof new module', () => {
     );
   });
 
+  it('takes no air for that of a label in which nothing stands, nor negative volts, nor a comma', async () => {
+    const path = join(folder(), 'K1.yaml');
+    const answers = [
+      '',
+      '',
+      '-15 V',
+      '12,5 V',
+      '12.5 V',
+      '4 A',
+      '1e9 °C',
+      '-300 °C',
+      '40 °C',
+      'mains',
+      'I',
+      '',
+      '',
+    ];
+    const { status, screen } = await atTerminal(['new', 'module', path], answers);
+    expect(status).toBe(0);
+    expect(screen).toContain("found '-15 V'; more than 0 V is needed");
+    expect(screen).toContain("found '12,5 V'; the decimal sign is a point: '12.5 V'");
+    expect(screen).toContain("found '1e9 °C'; at most 150 °C is needed");
+    expect(screen).toContain("found '-300 °C'; at least -50 °C is needed");
+    expect((await readModule(path)).value.rated).toEqual({ voltage: 12.5, current: 4, ambient: 40 });
+  });
+
   it('never takes Enter for what a label says', async () => {
     const path = join(folder(), 'K2.yaml');
     const { status, screen } = await atTerminal(['new', 'module', path], ['', '', '', '', '', '']);
