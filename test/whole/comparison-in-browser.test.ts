@@ -1,12 +1,15 @@
-import { existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdtempSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { findTolerance } from '../../src/cli/baseline.js';
 import { movementOf } from '../../src/judgement/movement.js';
 import type { RunHeader } from '../../src/record/run-header.js';
 import type { ComparedRecords } from '../../src/report/comparison.js';
 import { comparisonPage } from '../../src/report/comparison-page/comparison-page.js';
+import type { Result } from '../../src/report/result.js';
+import { understand } from '../../src/report/understand.js';
 import { evenly } from '../analysis/evidence-of.js';
 import { thermometerHeader, warming } from '../analysis/soak-events.js';
 import {
@@ -20,10 +23,12 @@ import {
 import { limited, soaked } from '../report/run-charts/made-results.js';
 import { nobodyShutOut, openBrowser, patience } from '../view/page/browser.js';
 import { chartsOn, cutOff, offThePaper, type OpenedPage, openFile } from './page-in-browser.js';
+import { runShipped } from './shipped-runs.js';
 import { textsInTheWay } from './texts-in-the-way.js';
 
 const made = { program: 'railproof test', date: new Date('2026-12-02T17:00:00Z') };
 const hostile = '"><script>document.title="gone"</script><img src=x onerror=alert(1)>'.repeat(3);
+const kept = 'fixtures/runs';
 const overAll = ['How far each moved', 'Voltage over current', 'Later voltage less the earlier one'];
 
 /** A thermometer flickers; what is fitted without any scatter has a dozen idle digits. */
@@ -101,6 +106,28 @@ describe.skipIf(isMissing)('the page of a comparison in a browser (needs /usr/bi
     patience,
   );
 
+  it.each([
+    ['limit-shape', 'its limit', runShipped],
+    ['thermal-soak', 'a soak', runShipped],
+    ['real-limit', 'two kept modules', keptPair],
+  ] as const)(
+    'shows all of the findings of a whole %s record, %s, on a desk and on a phone',
+    async (procedure, _, resultsOf) => {
+      const results = [await resultsOf(procedure, folder)].flat();
+      const [before, after = before] = results as [Result, Result?];
+      const { value: tolerance } = await findTolerance('unchanged');
+      const { page, close } = await opened(procedure, compared(before, after, tolerance.findings));
+      expect(await page.locator('table.notes td:has-text("E_n")').count()).toBeGreaterThan(2);
+      for (const width of [1280, 1000, 860, 360]) {
+        await page.setViewportSize({ width, height: 800 });
+        expect(await page.evaluate(wideTables), `${width} px`).toEqual([]);
+      }
+      expect(await page.evaluate(besideTheirHeading)).toEqual([]);
+      await close();
+    },
+    patience,
+  );
+
   it(
     'shows hostile names as texts',
     async () => {
@@ -127,6 +154,30 @@ describe.skipIf(isMissing)('the page of a comparison in a browser (needs /usr/bi
     return openFile(browser, file);
   }
 });
+
+/** Records of two modules that are kept in the drawer. */
+function keptPair(procedure: string): readonly [Result, Result] {
+  const [one = '', other = ''] = readdirSync(kept)
+    .filter((run) => run.endsWith(procedure))
+    .map((run) => join(kept, run));
+  return [understand(one), understand(other)];
+}
+
+// What runs in the page is text, as the types of a browser are none of ours.
+const wideTables = `[...document.querySelectorAll('.wide:has(table)')]
+  .filter((one) => one.scrollWidth > one.clientWidth)
+  .map((one) => one.ariaLabel + ' ' + one.scrollWidth + ' > ' + one.clientWidth)`;
+
+/** Texts of a cell that slid below its heading at the left, where a table has become a list. */
+const besideTheirHeading = `[...document.querySelectorAll('table.notes td')].flatMap((cell) => {
+  const room = cell.getBoundingClientRect();
+  if (room.width === 0) return [];
+  const text = document.createRange();
+  text.selectNodeContents(cell);
+  return [...text.getClientRects()].some(({ left, width }) => width > 0 && left < room.left + 100)
+    ? [cell.textContent]
+    : [];
+})`;
 
 /** All of them and no others, in their order. */
 async function hasCharts(page: Page, titles: readonly string[]): Promise<void> {

@@ -38,11 +38,16 @@ function cellsOf(compared: Compared): readonly Content[] {
   const { finding, before, after } = compared;
   return [
     finding,
-    before === undefined ? '' : inTwoLines(valuePlusMinus(before)),
-    after === undefined ? '' : inTwoLines(valuePlusMinus(after)),
+    before === undefined ? '' : inOne(inTwoLines(valuePlusMinus(before))),
+    after === undefined ? '' : inOne(inTwoLines(valuePlusMinus(after))),
     differenceOf(compared),
-    [verdictOf(compared), softly(becauseOf(compared))],
+    inOne([verdictOf(compared), softly(becauseOf(compared))]),
   ];
+}
+
+/** On a phone a cell stands beside its heading, and each child of it would be a cell of its own there. */
+function inOne(content: Content): Markup {
+  return element('span', {}, content);
 }
 
 function becauseOf(compared: Compared): string {
@@ -63,10 +68,11 @@ function inTwoLines(value: string): Content {
 
 function differenceOf(compared: Compared): Content {
   const { difference } = compared;
-  if (difference === undefined) return '';
+  const change = changeInWords(compared);
+  if (difference === undefined || change === '') return '';
   const { normalizedError } = difference;
   const ratio = normalizedError === null ? '' : `E_n ${signed(normalizedError)}`;
-  return [changeInWords(compared), softly(ratio)];
+  return inOne([change, softly(ratio)]);
 }
 
 function signed(normalizedError: number): string {
