@@ -44,6 +44,8 @@ export interface PerformOptions {
   readonly watch: RunWatcher;
   /** Told as soon as the record has its folder. */
   readonly recorded?: (folder: RunFolder) => void;
+  /** Told how the bench was left, and waited for, before what the record shows is worked out. Never rejects. */
+  readonly left?: (performed: Performed, folder: RunFolder) => Promise<void>;
 }
 
 /**
@@ -117,6 +119,7 @@ async function performWatched(
         ...options,
         ...{ plan, bench, journal, clock: world.clock, from, signal },
       });
+      await options.left?.(performed, folder);
       // What follows may keep us busy for so long that we would count as hung.
       await watchman?.dismiss();
       return { ...performed, folder, understood: await finish(folder, world.clock.wall()) };

@@ -35,6 +35,7 @@ export async function playPlain(
     return await performPlan(loaded, world, {
       ...{ runs, operator, signal, hurry, watch },
       ...(recorded && { recorded }),
+      ...(view && { left: (performed, folder) => view.left(performed, folder) }),
     });
   } finally {
     watch.end();

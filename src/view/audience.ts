@@ -2,7 +2,7 @@ import type { ServerResponse } from 'node:http';
 import type { Clock } from '../clock/clock.js';
 import type { Seconds } from '../quantity/quantity.js';
 import { EventPage } from './event-page.js';
-import { applied, type ViewMessage, type ViewState } from './view-state.js';
+import { applied, leftBy, type ViewMessage, type ViewState } from './view-state.js';
 
 /** What a run tells of itself; a page is also told everything, first of all. */
 export type Told = Exclude<ViewMessage, { kind: 'everything' | 'beat' }>;
@@ -62,18 +62,23 @@ export class Audience {
     }
     if (message.kind === 'step') this.#waiting = undefined;
     // What comes after it must not be set back by it.
-    if (message.kind === 'ended') this.#tellWaiting();
+    if (message.kind === 'working-out' || message.kind === 'ended') this.#tellWaiting();
     this.#tell(message);
   }
 
   /** So that silence means that the runner is lost. */
   beat(times: Times | undefined): void {
-    const beat = { kind: 'beat', ...(this.#state.ended === undefined && times) } as const;
+    const beat = { kind: 'beat', ...(leftBy(this.#state) === undefined && times) } as const;
     // What comes after it must not be set back by it.
     this.#tellWaiting();
     this.#state = applied(this.#state, beat);
     const event = eventOf(beat);
     for (const page of this.#pages) page.beat(event);
+  }
+
+  /** Settled once all that was told is on its way to every page that reads. */
+  async flushed(): Promise<void> {
+    await Promise.all(Array.from(this.#pages, (page) => page.flushed()));
   }
 
   /** Settled once every page that reads has all of it. */

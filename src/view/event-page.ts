@@ -53,6 +53,20 @@ export class EventPage {
     else if (this.#clock.now() - this.#blockedSince > patience) this.#response.destroy();
   }
 
+  /** Settled once what it was told has left this process, or nobody is there to read it. */
+  async flushed(): Promise<void> {
+    const response = this.#response;
+    if (response.destroyed || response.writableEnded) return;
+    await new Promise<void>((resolve) => {
+      response.once('close', resolve);
+      // A comment, which a page passes over: it goes out after all that stands before it.
+      response.write(':\n\n', () => {
+        response.off('close', resolve);
+        resolve();
+      });
+    });
+  }
+
   /** Settled once all of it is on its way, or nobody is there to read it. */
   async end(): Promise<void> {
     const response = this.#response;

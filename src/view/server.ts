@@ -15,6 +15,8 @@ export interface LiveView {
   readonly address: string;
   readonly state: ViewState;
   show(message: Told): void;
+  /** Settled, before long, once all that was shown has left this process for every page that reads. */
+  flushed(): Promise<void>;
   /** Settled with the answer that a page gives. @throws the signal's reason once it takes the question away. */
   ask(question: Asked, signal: AbortSignal): Promise<string>;
   /** Waits, though not for long, until every page has all of it, and lets go of them. */
@@ -96,6 +98,7 @@ export async function openLiveView(options: ViewOptions): Promise<LiveView> {
     show: (message) => {
       audience.show(message);
     },
+    flushed: () => within(patience.goodbye, audience.flushed()),
     ask: (question, signal) => questions.ask(question, signal),
     close: async () => {
       clearInterval(beat);

@@ -22,6 +22,8 @@ export interface ViewState {
   readonly notices: readonly ViewedNotice[];
   /** A wish to stop was heard. */
   readonly stopping: boolean;
+  /** From when the bench was left until it is told what the run came to. */
+  readonly workingOut: ViewedLeft | undefined;
   readonly ended: ViewedEnd | undefined;
 }
 
@@ -86,12 +88,10 @@ export interface ViewedNotice {
   readonly text: string;
 }
 
-export interface ViewedEnd {
+/** How a run ended and left the bench, which is known before it is worked out what its record shows. */
+export interface ViewedLeft {
   readonly how: 'completed' | 'stopped' | 'failed';
   readonly reason: string | null;
-  /** What it came to, the answer first; empty where nothing could be told. */
-  readonly answer: readonly string[];
-  readonly outcome: 'conforms' | 'does-not-conform' | 'undecided' | 'not-judged';
   /** Whether load and source are off, in words; and what to do by hand where that could not be confirmed. */
   readonly safety: readonly {
     readonly what: 'load' | 'source';
@@ -100,6 +100,14 @@ export interface ViewedEnd {
   }[];
   /** The record's folder; empty where none was begun. */
   readonly record: string;
+}
+
+export interface ViewedEnd extends ViewedLeft {
+  /** What it came to, the answer first; empty where nothing could be told. */
+  readonly answer: readonly string[];
+  readonly outcome: 'conforms' | 'does-not-conform' | 'undecided' | 'not-judged';
+  /** The file of the report; null where it was not written. */
+  readonly report: string | null;
 }
 
 /** One change; what the stream of events carries, each as one JSON object. */
@@ -120,6 +128,8 @@ export type ViewMessage =
   | { readonly kind: 'question'; readonly question?: Question }
   | { readonly kind: 'notice'; readonly notice: ViewedNotice }
   | { readonly kind: 'stopping' }
+  /** The bench is left, and the runner will be silent for as long as the record keeps it busy. */
+  | { readonly kind: 'working-out'; readonly left: ViewedLeft }
   | { readonly kind: 'ended'; readonly ended: ViewedEnd }
   /** Every second, so that silence means that the runner is lost; with the times where they went on. */
   | { readonly kind: 'beat'; readonly elapsed?: Seconds; readonly remaining?: Seconds };
@@ -155,13 +165,23 @@ export function applied(state: ViewState, message: ViewMessage): ViewState {
       return { ...state, notices: [...state.notices, message.notice].slice(-mostNotices) };
     case 'stopping':
       return { ...state, stopping: true };
+    case 'working-out':
+      return { ...state, workingOut: message.left, question: undefined };
     case 'ended':
-      return { ...state, ended: message.ended, question: undefined };
+      return { ...state, ended: message.ended, workingOut: undefined, question: undefined };
     case 'beat': {
       const { elapsed = state.elapsed, remaining = state.remaining } = message;
       return { ...state, elapsed, remaining };
     }
   }
+}
+
+/** How the run ended and left the bench; undefined while it goes on. */
+export function leftBy({
+  workingOut,
+  ended,
+}: Pick<ViewState, 'workingOut' | 'ended'>): ViewedLeft | undefined {
+  return ended ?? workingOut;
 }
 
 /**

@@ -182,7 +182,7 @@ export const printedByParts: Readonly<Record<string, Says>> = {
       'runs/20261202T091500Z-K1-real-limit/journal.jsonl',
       Object.assign(new Error('no space'), { code: 'ENOSPC' }),
     ),
-  'The live view says no word': () => lostWords({ kind: 'lost', seconds: 5, why: 'silent' }, true),
+  'The live view says no word': () => lostWords({ kind: 'lost', seconds: 5, why: 'silent' }, undefined),
   'Its address opens once': addressOpenedTwice,
   "The live view can't be served": () => new LiveViewError(new Error('listen EPERM 127.0.0.1')),
   'No page opens': () => openFile('report.html', { PATH: '' }),

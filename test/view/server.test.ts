@@ -7,6 +7,8 @@ import { LiveViewError } from '../../src/view/view-error.js';
 import type { ViewedEnd } from '../../src/view/view-state.js';
 import { until } from '../whole/at-the-bench.js';
 import { asSent, type AView, aView, follow, post, send } from './a-view.js';
+import { aBusyRunner } from './busy-runner.js';
+import { patience } from '../../src/view/page/silence.js';
 import { before, point } from './page/viewed.js';
 
 const ended: ViewedEnd = {
@@ -16,6 +18,7 @@ const ended: ViewedEnd = {
   outcome: 'conforms',
   safety: [{ what: 'load', confirmed: true, text: 'The load is off; it was read back.' }],
   record: 'runs/x',
+  report: 'runs/x/report.html',
 };
 const short: Patience = { head: 200, request: 400, idle: 200, look: 50, goodbye: 100 };
 const open: AView[] = [];
@@ -120,6 +123,41 @@ describe('those who follow a run', () => {
     view.show({ kind: 'ended', ended });
     await page.heard((message) => message.kind === 'beat' && message.elapsed === undefined);
     expect(page.state).toEqual(asSent(view.state));
+  });
+
+  it('know how the bench was left before the record keeps the runner silent for longer than they would wait', async () => {
+    const runner = await aBusyRunner(before);
+    const { port: at, search } = new URL(runner.address);
+    const { headers } = await send(Number(at), `/${search}`);
+    const page = await follow(Number(at), headers['set-cookie']?.[0]?.split(';')[0] ?? 'none');
+    await page.heard(({ kind }) => kind === 'everything');
+    runner.workOut(patience + 1, ended);
+    await page.heard(({ kind }) => kind === 'working-out');
+    const began = performance.now();
+    expect(page.state).toMatchObject({ workingOut: { safety: ended.safety, record: 'runs/x' } });
+    expect(page.state?.ended).toBeUndefined();
+    await page.heard(({ kind }) => kind === 'ended');
+    // The first was on its way before the silence began.
+    expect((performance.now() - began) / 1000).toBeGreaterThan(patience);
+    expect(page.state).toMatchObject({ ended, workingOut: undefined });
+    await page.over;
+  });
+
+  it('keep nobody waiting for long where one of them reads nothing', async () => {
+    const { view, port, cookie } = await seen({ patience: short });
+    await view.flushed();
+    const stuck = await raw(
+      port,
+      ['GET /events HTTP/1.1', `host: 127.0.0.1:${port}`, `cookie: ${cookie}`, '', ''].join('\r\n'),
+    );
+    stuck.pause();
+    await until(() => stuck.bytesRead > 0 || stuck.readableLength > 0 || stuck.isPaused());
+    const text = 'a notice that nobody reads '.repeat(30);
+    for (let t = 0; t < 900; t += 1) view.show({ kind: 'notice', notice: { t, text } });
+    const began = performance.now();
+    await view.flushed();
+    expect(performance.now() - began).toBeLessThan(2000);
+    stuck.destroy();
   });
 
   it('are not disturbed by one that breaks off, nor is the run', async () => {

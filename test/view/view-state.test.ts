@@ -1,9 +1,11 @@
 import { describe, expect, it } from 'vitest';
 import {
   applied,
+  leftBy,
   mostNotices,
   mostPoints,
   type ViewedEnd,
+  type ViewedLeft,
   type ViewedPoint,
   type ViewMessage,
   type ViewState,
@@ -56,9 +58,26 @@ describe('what a page knows of a run', () => {
       outcome: 'not-judged',
       safety: [],
       record: 'runs/x',
+      report: null,
     };
     const state = after([{ kind: 'question', question }, { kind: 'stopping' }, { kind: 'ended', ended }]);
     expect(state).toMatchObject({ question: undefined, stopping: true, ended });
+  });
+
+  it('has how the bench was left until it is told what the run came to, and nothing to ask from then on', () => {
+    const question = { id: 1, heading: 'To do', text: 'Unplug K1.', answer: 'done' } as const;
+    const left: ViewedLeft = { how: 'completed', reason: null, safety: [], record: 'runs/x' };
+    const atWork = after([
+      { kind: 'question', question },
+      { kind: 'working-out', left },
+    ]);
+    expect(atWork).toMatchObject({ workingOut: left, ended: undefined, question: undefined });
+    expect(leftBy(atWork)).toBe(left);
+    const ended: ViewedEnd = { ...left, answer: ['It holds.'], outcome: 'conforms', report: null };
+    const over = applied(atWork, { kind: 'ended', ended });
+    expect(over).toMatchObject({ workingOut: undefined, ended });
+    expect(leftBy(over)).toBe(ended);
+    expect(leftBy(before)).toBeUndefined();
   });
 
   it('lets time go on with a beat that tells it, and stand with one that does not', () => {

@@ -1,6 +1,6 @@
 import { type ChildProcess, spawn } from 'node:child_process';
 import { once } from 'node:events';
-import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
@@ -128,11 +128,19 @@ describe('a run without a terminal that is watched', () => {
     await page.heard(({ kind }) => kind === 'ended');
     expect(await askLoad(served.bench)).toBe('0');
     expect(page.state).toMatchObject({ input: 'off', stopping: true, question: undefined });
-    expect(page.state?.ended).toMatchObject({
+    const left = {
       how: 'stopped',
       reason: 'stopped in the live view',
       safety: [{ confirmed: true, text: 'The load is off; it was read back.' }],
-    });
+    };
+    expect(page.state?.ended).toMatchObject(left);
+    // How the bench was left is told before what was read is worked out.
+    expect(page.messages.filter(({ kind }) => kind === 'working-out' || kind === 'ended')).toMatchObject([
+      { kind: 'working-out', left },
+      { kind: 'ended', ended: left },
+    ]);
+    const { report = null } = page.state?.ended ?? {};
+    expect(readFileSync(report ?? '', 'utf8')).toContain('K1');
     const { status, stderr } = await run.end;
     expect(status).toBe(3);
     expect(stderr).toContain('Answered in the live view: 23.5 degC');

@@ -29,6 +29,7 @@ export function firstState({ plan, resumed }: LoadedPlan, { began }: { readonly 
     question: undefined,
     notices: [],
     stopping: false,
+    workingOut: undefined,
     ended: undefined,
   };
 }

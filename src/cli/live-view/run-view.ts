@@ -6,6 +6,8 @@ import type { Clock } from '../../clock/clock.js';
 import { realClock } from '../../clock/real-clock.js';
 import { printableLines } from '../../quantity/printable.js';
 import type { TerminalOperator } from '../../run/terminal-operator.js';
+import type { RunFolder } from '../../record/run-folder.js';
+import type { Performed } from '../../run/perform.js';
 import type { Operator } from '../../steps/operator.js';
 import { readPageFiles } from '../../view/page-files.js';
 import { openLiveView } from '../../view/server.js';
@@ -20,13 +22,15 @@ import { whenAborted } from '../when-aborted.js';
 import { firstState } from './first-state.js';
 import { operatorAtBoth } from './operator-at-both.js';
 import { viewProgress } from './view-progress.js';
-import { notBegun, viewedEnd } from './viewed-end.js';
+import { notBegun, viewedEnd, viewedLeft } from './viewed-end.js';
 
 /** A run as pages on this machine see it. */
 export interface RunView {
   /** The person who is asked there and at the terminal. */
   operator(terminal: TerminalOperator, yes: boolean): Operator;
   progress(run: RunSoFar): RunProgress;
+  /** Told before the record keeps us busy; settled once every page has it, or does not read. Never rejects. */
+  left(performed: Performed, folder: RunFolder): Promise<void>;
   ended(performed: PlanPerformed): void;
   failed(error: unknown): void;
   /** Once every page has heard the last of it, or does not listen. Never rejects. */
@@ -84,6 +88,10 @@ export async function openRunView(
     progress: (run) => {
       counted = run;
       return viewProgress(run, view);
+    },
+    left: async (performed, folder) => {
+      view.show({ kind: 'working-out', left: viewedLeft(performed, folder) });
+      await view.flushed();
     },
     ended: (performed) => {
       view.show({ kind: 'ended', ended: viewedEnd(performed) });

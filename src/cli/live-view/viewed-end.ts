@@ -2,25 +2,37 @@ import { FoundOnError } from '../../bench/found-on.js';
 import { messageOf } from '../../errors/message-of.js';
 import { exitCodeOf, exitCodes, RailproofError } from '../../errors/railproof-error.js';
 import { capitalised } from '../../quantity/capitalised.js';
+import type { RunFolder } from '../../record/run-folder.js';
 import { answer } from '../../report/answer.js';
-import type { ViewedEnd } from '../../view/view-state.js';
+import type { Performed } from '../../run/perform.js';
+import type { ViewedEnd, ViewedLeft } from '../../view/view-state.js';
 import type { PlanPerformed } from '../perform-plan.js';
 import { safetyWords } from '../safety-words.js';
 
-/** How a run ended, as a page tells it. */
-export function viewedEnd(performed: PlanPerformed): ViewedEnd {
-  const { ending, understood, folder } = performed;
+/** How a run ended and left the bench, as a page tells it while its record is worked out. */
+export function viewedLeft(performed: Performed, folder: RunFolder): ViewedLeft {
+  const { ending } = performed;
   return {
     how: ending.how,
     reason: ending.how === 'completed' ? null : ending.reason,
+    safety: safetyWords(performed),
+    record: folder.path,
+  };
+}
+
+/** The same, and what the record shows. */
+export function viewedEnd(performed: PlanPerformed): ViewedEnd {
+  const { understood, folder } = performed;
+  const isWritten = understood.kind === 'result' && understood.unkept === undefined;
+  return {
+    ...viewedLeft(performed, folder),
     ...(understood.kind === 'result'
       ? { answer: answer(understood.result), outcome: understood.result.outcome }
       : {
           answer: [`What the record shows could not be told: ${messageOf(understood.error)}`],
           outcome: 'not-judged',
         }),
-    safety: safetyWords(performed),
-    record: folder.path,
+    report: isWritten ? folder.report : null,
   };
 }
 
@@ -35,5 +47,6 @@ export function notBegun(error: unknown): ViewedEnd {
     outcome: 'not-judged',
     safety: isOn ? [{ what: 'load', confirmed: false, text: capitalised(advice ?? '') }] : [],
     record: '',
+    report: null,
   };
 }

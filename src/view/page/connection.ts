@@ -1,12 +1,9 @@
 import type { ViewMessage } from '../view-state.js';
-import { type Hearing, patience, type Why } from './silence.js';
-
-/** A browser tries again of itself after a broken line, not after a refusal, and never where a line is open and dumb. */
-const tryAgainAfter = 2 * patience;
+import { type Hearing, patience, patienceAt, type Stage, type Why } from './silence.js';
 
 export interface Connection {
   /** What there is to say of the line now. */
-  hearing(): Omit<Hearing, 'ended'>;
+  hearing(): Omit<Hearing, 'stage'>;
   close(): void;
 }
 
@@ -14,8 +11,15 @@ export function now(): number {
   return performance.now() / 1000;
 }
 
-/** Follows the runner's stream of messages, and goes on trying until it is closed. */
-export function follow(told: (message: ViewMessage) => void, changed: () => void): Connection {
+/**
+ * Follows the runner's stream of messages, and goes on trying until it is closed.
+ * @param stageNow how far the run is, by which silence is borne.
+ */
+export function follow(
+  told: (message: ViewMessage) => void,
+  changed: () => void,
+  stageNow: () => Stage,
+): Connection {
   const since = now();
   let heard: number | undefined;
   let tried = since;
@@ -54,21 +58,25 @@ export function follow(told: (message: ViewMessage) => void, changed: () => void
     changed();
   }
 
-  const clock = setInterval(() => {
-    if (
-      now() - tried > tryAgainAfter ||
-      (stream.readyState === EventSource.CLOSED && now() - tried > patience)
-    ) {
+  /** A browser tries again of itself after a broken line, not after a refusal, and never where a line is open and dumb. */
+  function look(): void {
+    const tryAgainAfter = patience + (stream.readyState === EventSource.CLOSED ? 0 : patienceAt(stageNow()));
+    if (now() - tried > tryAgainAfter) {
       stream.close();
       stream = open();
     }
     changed();
-  }, 500);
+  }
+
+  const clock = setInterval(look, 500);
+  // Of a page that nobody sees the browser lets the clock stand for up to a minute.
+  document.addEventListener('visibilitychange', look);
 
   return {
     hearing: () => ({ since, heard, why }),
     close() {
       clearInterval(clock);
+      document.removeEventListener('visibilitychange', look);
       stream.close();
     },
   };

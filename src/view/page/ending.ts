@@ -1,7 +1,7 @@
-import type { ViewedEnd } from '../view-state.js';
+import type { ViewedEnd, ViewedLeft } from '../view-state.js';
 import { alarm, tell } from './announce.js';
 import { drawn, made, place, show, whenChanged, write } from './dom.js';
-import { type EndShown, endShown } from './wording.js';
+import { answerWords, type EndShown, endShown, isWorkedOut } from './wording.js';
 
 const signs: Readonly<Record<EndShown['look'], { readonly outline: string; readonly mark: string }>> = {
   good: { outline: 'M4 30a26 26 0 1 0 52 0a26 26 0 1 0 -52 0z', mark: 'M18 31L27 40L43 21' },
@@ -10,11 +10,13 @@ const signs: Readonly<Record<EndShown['look'], { readonly outline: string; reado
   plain: { outline: 'M8 8H52V52H8Z', mark: 'M16 30H44' },
 };
 
-export const showEnding: (ended: ViewedEnd | undefined) => void = whenChanged((ended) => {
+/** How the bench was left, as soon as that is known, and then what the run came to. */
+export const showEnding: (left: ViewedLeft | ViewedEnd | undefined) => void = whenChanged((left) => {
   const section = place('ending');
-  show(section, ended !== undefined);
-  if (ended === undefined) return;
-  const { heading, look } = endShown(ended);
+  show(section, left !== undefined);
+  if (left === undefined) return;
+  const { how } = left;
+  const { heading, look } = endShown(left);
   section.className = `ending ${look}`;
   const { outline, mark } = signs[look];
   place('ending-sign').replaceChildren(
@@ -22,14 +24,19 @@ export const showEnding: (ended: ViewedEnd | undefined) => void = whenChanged((e
     drawn('path', { class: 'mark', d: mark }),
   );
   write(place('ending-heading'), heading);
-  place('ending-text').replaceChildren(...words(ended));
-  const unsafe = ended.safety.filter(({ confirmed }) => !confirmed);
+  place('ending-text').replaceChildren(...words(left));
+  const unsafe = left.safety.filter(({ confirmed }) => !confirmed);
   if (unsafe.length > 0) alarm(unsafe.map(({ text }) => text).join(' '));
-  else tell(`The run is over: ${heading}. ${ended.safety.map(({ text }) => text).join(' ')}`);
+  else {
+    const safe = left.safety.map(({ text }) => text);
+    const over = how === 'completed' && !isWorkedOut(left) ? heading : `The run is over: ${heading}`;
+    tell([`${over}.`, ...safe, ...(isWorkedOut(left) ? [] : answerWords(left))].join(' '));
+  }
 });
 
 /** What a person must see to first, then what it came to, then where it is kept. */
-function words({ how, reason, answer, safety, record }: ViewedEnd): readonly HTMLElement[] {
+function words(left: ViewedLeft | ViewedEnd): readonly HTMLElement[] {
+  const { how, reason, safety, record } = left;
   const unsafe = safety.filter(({ confirmed }) => !confirmed);
   const safe = safety.filter(({ confirmed }) => confirmed);
   return [
@@ -44,7 +51,13 @@ function words({ how, reason, answer, safety, record }: ViewedEnd): readonly HTM
         ]
       : []),
     ...safe.map(({ text }) => made('p', { class: 'safety' }, text)),
-    ...answer.map((line) => made('p', {}, line)),
-    ...(record === '' ? [] : [made('p', {}, 'Record: ', made('span', { class: 'folder' }, record))]),
+    ...answerWords(left).map((line) => made('p', {}, line)),
+    ...(isWorkedOut(left) && left.report !== null ? [kept('Report', left.report)] : []),
+    ...(record === '' ? [] : [kept('Record', record)]),
   ];
+}
+
+/** A page of the run's own may not reach for files: where it is stands as text. */
+function kept(what: string, path: string): HTMLElement {
+  return made('p', {}, `${what}: `, made('span', { class: 'folder' }, path));
 }

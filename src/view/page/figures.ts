@@ -1,4 +1,4 @@
-import type { ViewState } from '../view-state.js';
+import { leftBy, type ViewState } from '../view-state.js';
 import { made, place, write, show } from './dom.js';
 import { type FigureShown, figuresShown } from './numbers.js';
 import type { Line } from './silence.js';
@@ -13,15 +13,16 @@ const rows = new Map<string, { readonly value: HTMLElement; readonly set: HTMLEl
 
 export function showFigures(state: ViewState, seconds: number | undefined, line: Line): void {
   for (const figure of figuresShown(state)) showFigure(figure);
-  write(heading, line.kind === 'lost' || line.kind === 'over' ? 'Last read' : 'Now');
-  write(place('note'), state.ended === undefined ? (state.figures.note ?? '') : '');
+  const isOver = leftBy(state) !== undefined;
+  write(heading, line.kind === 'lost' || isOver ? 'Last read' : 'Now');
+  write(place('note'), !isOver ? (state.figures.note ?? '') : '');
   const any = Object.keys(state.figures).some((name) => name !== 'note' && name !== 'setCurrent');
   const { text, old } = ageWords(seconds, any, line);
   write(age, text);
   section?.classList.toggle('old', old);
   section?.classList.toggle('aged', line.kind === 'lost');
-  section?.classList.toggle('past', line.kind === 'over');
-  const latest = state.ended === undefined ? state.notices.at(-1) : undefined;
+  section?.classList.toggle('past', isOver && line.kind !== 'lost');
+  const latest = !isOver ? state.notices.at(-1) : undefined;
   show(place('latest'), latest !== undefined);
   if (latest !== undefined)
     write(place('latest'), `Latest notice, at ${clockTime(latest.t)}: ${latest.text}`);

@@ -24,7 +24,7 @@ export function showLoad(state: ViewState | undefined, line: Line): void {
   write(place('load-word'), loadWords(state, line));
   write(place('line'), lineWords(line));
   place('load').classList.toggle('silent', line.kind === 'lost');
-  const known = line.kind === 'live' || line.kind === 'over' ? loadLeft(state) : undefined;
+  const known = line.kind === 'connecting' || line.kind === 'lost' ? undefined : loadLeft(state);
   place('load').classList.toggle('on', known === 'on');
   draw(known === undefined || known === 'unsure' ? 'unknown' : known === 'on' ? 'closed' : 'open');
 }

@@ -1,4 +1,4 @@
-import { applied, type ViewMessage, type ViewState } from '../view-state.js';
+import { applied, leftBy, type ViewMessage, type ViewState } from '../view-state.js';
 import { type Connection, follow, now } from './connection.js';
 import { showCurve } from './curve.js';
 import { place, write } from './dom.js';
@@ -8,7 +8,7 @@ import { showLoad } from './load.js';
 import { showLost } from './lost.js';
 import { showCautions, showNotices } from './notes.js';
 import { showQuestion } from './question.js';
-import { lineOf } from './silence.js';
+import { lineOf, type Stage } from './silence.js';
 import { showSteps } from './steps.js';
 import { showStop } from './stop.js';
 import { titleWords } from './wording.js';
@@ -16,26 +16,31 @@ import { titleWords } from './wording.js';
 let state: ViewState | undefined;
 /** When the figures last came; undefined while only those of before this page listened are known. */
 let readAt: number | undefined;
-const connection: Connection = follow(heard, shown);
+const connection: Connection = follow(heard, shown, stage);
 
 function heard(message: ViewMessage): void {
   if (message.kind === 'everything') state = message.state;
   else if (state !== undefined) state = applied(state, message);
   if (message.kind === 'figures') readAt = now();
   if (message.kind === 'everything' || message.kind === 'step') readAt = undefined;
-  if (state?.ended !== undefined) connection.close();
+  if (stage() === 'over') connection.close();
   shown();
+}
+
+function stage(): Stage {
+  if (state?.ended !== undefined) return 'over';
+  return state?.workingOut === undefined ? 'under-way' : 'working-out';
 }
 
 /** All of the page follows from the state and from how long ago it was heard. */
 function shown(): void {
-  const line = lineOf({ ...connection.hearing(), ended: state?.ended !== undefined }, now());
+  const line = lineOf({ ...connection.hearing(), stage: stage() }, now());
   document.title = `${titleWords(state, line)} · railproof`;
-  showLost(line, state !== undefined);
+  showLost(line, state);
   showLoad(state, line);
   if (state === undefined) return;
   showRun(state);
-  showEnding(state.ended);
+  showEnding(leftBy(state));
   showStop(state, line);
   showQuestion(state);
   showFigures(state, readAt === undefined ? undefined : now() - readAt, line);

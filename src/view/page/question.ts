@@ -1,4 +1,4 @@
-import type { Question, ViewState } from '../view-state.js';
+import { leftBy, type Question, type ViewState } from '../view-state.js';
 import { alarm, tell } from './announce.js';
 import { send, type Sent } from './connection.js';
 import { made, place, show, write } from './dom.js';
@@ -23,7 +23,9 @@ let sending = false;
 let answeredIn = 0;
 
 /** What is asked stays as it is, with all that was typed, until another is asked. */
-export function showQuestion({ question, stopping, ended, step }: ViewState): void {
+export function showQuestion(state: ViewState): void {
+  const { question, stopping, step } = state;
+  const isOver = leftBy(state) !== undefined;
   if (step !== answeredIn) show(answered, false);
   if (question?.id === open?.id) return;
   const before = open;
@@ -34,10 +36,10 @@ export function showQuestion({ question, stopping, ended, step }: ViewState): vo
   show(section, question !== undefined);
   if (before !== undefined) {
     answeredIn = step;
-    tellOfAnswer(before, stopping || ended !== undefined);
+    tellOfAnswer(before, stopping || isOver);
   }
   if (question === undefined) {
-    if (wasHere && ended === undefined) place('module').focus();
+    if (wasHere && !isOver) place('module').focus();
     return;
   }
   // Another step may ask under the same name, and what was read for the one is no answer to the other.

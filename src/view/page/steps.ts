@@ -1,5 +1,5 @@
 import { spokenTime } from '../../quantity/spoken-time.js';
-import type { ViewState } from '../view-state.js';
+import { leftBy, type ViewState } from '../view-state.js';
 import { tell } from './announce.js';
 import { drawn, made, place, write } from './dom.js';
 import { standingOf, type StepStanding, standingWords, stepWords, timesWords } from './wording.js';
@@ -18,10 +18,11 @@ export function showSteps(state: ViewState): void {
   const words = stepWords(state);
   write(place('step-now'), words);
   write(place('times'), timesWords(state));
-  const { ended, run, step } = state;
-  const standing = `${run.began} ${step} ${ended?.how ?? ''}`;
+  const { run, step } = state;
+  const left = leftBy(state);
+  const standing = `${run.began} ${step} ${left?.how ?? ''}`;
   if (standing === told) return;
-  if (told !== undefined && ended === undefined) tell(words);
+  if (told !== undefined && left === undefined) tell(words);
   told = standing;
   place('steps').replaceChildren(
     ...run.steps.map((each, index) => item(each, index + 1, standingOf(index + 1, state))),

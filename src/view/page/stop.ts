@@ -1,4 +1,4 @@
-import type { ViewState } from '../view-state.js';
+import { leftBy, type ViewState } from '../view-state.js';
 import { alarm, tell } from './announce.js';
 import { now, send } from './connection.js';
 import { place, show, write } from './dom.js';
@@ -30,13 +30,13 @@ async function stop(): Promise<void> {
   alarm(text);
 }
 
-export function showStop({ stopping, ended }: ViewState, line: Line): void {
-  over = ended !== undefined;
+export function showStop(state: ViewState, line: Line): void {
+  over = leftBy(state) !== undefined;
   if (over && document.activeElement === button) place('ending-heading').focus();
   show(button, !over);
   // Of a runner that is not heard nobody knows whether it heard: the button may be pressed again.
   if (line.kind === 'lost') asked = false;
-  if (line.kind === 'live' && stopping) asked = true;
+  if (line.kind === 'live' && state.stopping) asked = true;
   if (over || asked) show(trouble, false);
   if (asked) shape('Making the bench safe…', '');
   else if (armed === undefined) shape('Stop', 'or Esc twice');

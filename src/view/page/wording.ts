@@ -1,6 +1,13 @@
 import { spokenTime } from '../../quantity/spoken-time.js';
 import { typedAs } from '../../quantity/typed-as.js';
-import type { Question, ViewedCaution, ViewedEnd, ViewState } from '../view-state.js';
+import {
+  leftBy,
+  type Question,
+  type ViewedCaution,
+  type ViewedEnd,
+  type ViewedLeft,
+  type ViewState,
+} from '../view-state.js';
 import type { Line } from './silence.js';
 
 /** What is said of the line beside the load, at all times. */
@@ -12,22 +19,41 @@ export function lineWords(line: Line): string {
       return 'followed live';
     case 'lost':
       return `no word for ${wholeSeconds(line.seconds)}`;
+    case 'working-out':
     case 'over':
       return 'the run is over';
   }
 }
 
 /** The alarm of a lost runner: what may be so, what is so, what to do. Its count stands in the heading only. */
-export function lostWords(line: Line & { readonly kind: 'lost' }, known: boolean): readonly string[] {
+export function lostWords(
+  line: Line & { readonly kind: 'lost' },
+  state: ViewState | undefined,
+): readonly string[] {
+  const left = state?.workingOut;
+  if (left !== undefined) return [...lostAtWork(left), ...reasons[line.why], ...goesOn(line)];
   return [
     'The load may still be on. Look at the terminal.',
-    ...(known ? ['What stands below is old.'] : []),
+    ...(state !== undefined ? ['What stands below is old.'] : []),
     ...reasons[line.why],
     'A watchman at the runner tries to switch the load off when the runner is gone; do not rely on it. If in doubt cut the power by hand.',
-    ...(line.why === 'refused'
-      ? []
-      : ['This page goes on trying, and shows what is so as soon as it hears.']),
+    ...goesOn(line),
   ];
+}
+
+/** The bench was left before, which the runner told; what is missing can be worked out from the record again. */
+function lostAtWork({ safety, record }: ViewedLeft): readonly string[] {
+  return [
+    ...safety
+      .toSorted((one, other) => Number(one.confirmed) - Number(other.confirmed))
+      .map(({ text }) => text),
+    'That was told when the run was over. The program then worked out what the record shows, and no longer answers. Look at the terminal.',
+    `What was read is kept, and can be worked out again: railproof analyse ${record}`,
+  ];
+}
+
+function goesOn({ why }: Line & { readonly kind: 'lost' }): readonly string[] {
+  return why === 'refused' ? [] : ['This page goes on trying, and shows what is so as soon as it hears.'];
 }
 
 const reasons: Readonly<Record<(Line & { kind: 'lost' })['why'], readonly string[]>> = {
@@ -53,7 +79,8 @@ export function ageWords(
   any: boolean,
   line: Line,
 ): { readonly text: string; readonly old: boolean } {
-  if (line.kind === 'over') return { text: any ? '' : 'Nothing was read in the last step.', old: false };
+  if (line.kind === 'working-out' || line.kind === 'over')
+    return { text: any ? '' : 'Nothing was read in the last step.', old: false };
   if (!any) return { text: 'Nothing was read in this step yet.', old: line.kind === 'lost' };
   const age = seconds === undefined ? 'some time ago' : `${spokenTime(Math.floor(seconds))} ago`;
   if (line.kind === 'lost') return { text: `Old: read ${age}, and nothing was heard since.`, old: true };
@@ -67,7 +94,7 @@ export function ageWords(
  * a load that no longer answers may be on whatever it said before.
  */
 export function loadLeft(state: ViewState | undefined): 'on' | 'off' | 'unsure' | undefined {
-  const end = state?.ended?.safety.find(({ what }) => what === 'load');
+  const end = state && leftBy(state)?.safety.find(({ what }) => what === 'load');
   if (end === undefined) return state?.input;
   return end.confirmed ? 'off' : 'unsure';
 }
@@ -81,9 +108,9 @@ export function loadWords(state: ViewState | undefined, line: Line): string {
 }
 
 /** `1 min 5 s gone, about 2 min to go`. */
-export function timesWords({ elapsed, remaining, ended }: ViewState): string {
-  const gone = `${spokenTime(elapsed)} gone`;
-  return ended === undefined ? `${gone}, about ${spokenTime(remaining)} to go` : gone;
+export function timesWords(state: ViewState): string {
+  const gone = `${spokenTime(state.elapsed)} gone`;
+  return leftBy(state) === undefined ? `${gone}, about ${spokenTime(state.remaining)} to go` : gone;
 }
 
 export type StepStanding = 'done' | 'now' | 'to-come' | 'broken-off' | 'not-done';
@@ -91,11 +118,13 @@ export type StepStanding = 'done' | 'now' | 'to-come' | 'broken-off' | 'not-done
 /** Where a step stands, counted from 1. */
 export function standingOf(
   number: number,
-  { step, ended, run: { done = 0 } }: Pick<ViewState, 'step' | 'ended' | 'run'>,
+  state: Pick<ViewState, 'step' | 'workingOut' | 'ended' | 'run'>,
 ): StepStanding {
-  if (ended?.how === 'completed' || number < step || number <= done) return 'done';
-  if (number === step) return ended === undefined ? 'now' : 'broken-off';
-  return ended === undefined ? 'to-come' : 'not-done';
+  const { step, run } = state;
+  const left = leftBy(state);
+  if (left?.how === 'completed' || number < step || number <= (run.done ?? 0)) return 'done';
+  if (number === step) return left === undefined ? 'now' : 'broken-off';
+  return left === undefined ? 'to-come' : 'not-done';
 }
 
 export const standingWords: Readonly<Record<StepStanding, string>> = {
@@ -107,11 +136,13 @@ export const standingWords: Readonly<Record<StepStanding, string>> = {
 };
 
 /** `Step 2 of 3: 11 points from 0 A to 4 A`. */
-export function stepWords({ step, run, ended }: ViewState): string {
+export function stepWords(state: ViewState): string {
+  const { step, run } = state;
+  const left = leftBy(state);
   const count = run.steps.length;
   const now = run.steps[step - 1];
-  if (ended !== undefined)
-    return ended.how === 'completed' ? `All ${count} steps are done.` : endedIn(step, count);
+  if (left !== undefined)
+    return left.how === 'completed' ? `All ${count} steps are done.` : endedIn(step, count);
   return now === undefined
     ? `Before the first of ${count} steps.`
     : `Step ${step} of ${count}: ${now.summary}`;
@@ -145,8 +176,9 @@ export interface EndShown {
   readonly look: 'good' | 'bad' | 'unsure' | 'plain';
 }
 
-/** How it came out. A load of which nobody knows outweighs whatever was measured. */
-export function endShown({ how, reason, outcome, safety }: ViewedEnd): EndShown {
+/** How it came out, or how it ended while that is not known yet. A load of which nobody knows outweighs whatever was measured. */
+export function endShown(left: ViewedLeft | ViewedEnd): EndShown {
+  const { how, reason, safety } = left;
   const because = reason === null ? '' : `: ${reason}`;
   if (safety.some(({ confirmed }) => !confirmed)) return { heading: 'Look at the bench first', look: 'bad' };
   if (how === 'failed') return { heading: `Failed${because}`, look: 'bad' };
@@ -155,7 +187,18 @@ export function endShown({ how, reason, outcome, safety }: ViewedEnd): EndShown 
     const again = /^stopped (.+)$/s.exec(reason ?? '')?.[1];
     return { heading: again === undefined ? `Stopped${because}` : `Stopped ${again}`, look: 'unsure' };
   }
-  return outcomes[outcome];
+  return isWorkedOut(left) ? outcomes[left.outcome] : { heading: 'The run is over', look: 'plain' };
+}
+
+export function isWorkedOut(left: ViewedLeft | ViewedEnd): left is ViewedEnd {
+  return 'outcome' in left;
+}
+
+/** What it came to, the answer first. */
+export function answerWords(left: ViewedLeft | ViewedEnd): readonly string[] {
+  return isWorkedOut(left)
+    ? left.answer
+    : ['Working out what the record shows. After a long run that takes a while.'];
 }
 
 const outcomes: Readonly<Record<ViewedEnd['outcome'], EndShown>> = {
@@ -170,7 +213,8 @@ export function titleWords(state: ViewState | undefined, line: Line): string {
   if (state === undefined) return line.kind === 'lost' ? 'No word from the runner' : 'Live view';
   const { module } = state.run;
   if (line.kind === 'lost') return `No word · ${module}`;
-  if (state.ended !== undefined) return `${endShown(state.ended).heading} · ${module}`;
+  const left = leftBy(state);
+  if (left !== undefined) return `${endShown(left).heading} · ${module}`;
   if (state.question !== undefined) return `? ${state.question.heading} · ${module}`;
   return `${loadWords(state, line)} · ${module}`;
 }

@@ -1,8 +1,9 @@
 import { describe, expect, it } from 'vitest';
-import { notBegun, viewedEnd } from '../../../src/cli/live-view/viewed-end.js';
+import { notBegun, viewedEnd, viewedLeft } from '../../../src/cli/live-view/viewed-end.js';
 import type { PlanPerformed } from '../../../src/cli/perform-plan.js';
 import { FoundOnError } from '../../../src/bench/found-on.js';
 import { loadMayStillBeOn } from '../../../src/bench/make-safe.js';
+import { RecordWriteError } from '../../../src/record/record-error.js';
 import { runFolderAt } from '../../../src/record/run-folder.js';
 import { answer } from '../../../src/report/answer.js';
 import { understand } from '../../../src/report/understand.js';
@@ -28,8 +29,21 @@ describe('the end of a run on a page', () => {
       outcome: result.outcome,
       safety: [{ what: 'load', confirmed: true, text: 'The load is off; it was read back.' }],
       record: path,
+      report: completed.folder.report,
     });
     expect(answer(result)[0]).toMatch(/^Load it continuously/);
+  });
+
+  it('is told, as the bench was left, before it is known what it came to', () => {
+    const end = viewedEnd(completed);
+    const { how, reason, safety, record } = end;
+    expect(viewedLeft(completed, completed.folder)).toEqual({ how, reason, safety, record });
+  });
+
+  it('names no report where none was written', () => {
+    const unkept = new RecordWriteError(completed.folder.report, new Error('no space'));
+    const understood = { kind: 'result', result, unkept } as const;
+    expect(viewedEnd({ ...completed, understood }).report).toBeNull();
   });
 
   it('says why it was stopped', () => {
@@ -70,6 +84,7 @@ describe('the end of a run on a page', () => {
       outcome: 'not-judged',
       safety: [],
       record: '',
+      report: null,
     });
   });
 

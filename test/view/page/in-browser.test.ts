@@ -6,6 +6,7 @@ import { randomBytes } from 'node:crypto';
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, afterEach, beforeAll, describe, expect, it, vi } from 'vitest';
 import { realClock } from '../../../src/clock/real-clock.js';
+import { patience as patienceWithRunner } from '../../../src/view/page/silence.js';
 import { readPageFiles } from '../../../src/view/page-files.js';
 import { type LiveView, openLiveView } from '../../../src/view/server.js';
 import type { ViewedEnd, ViewState } from '../../../src/view/view-state.js';
@@ -20,6 +21,7 @@ import {
   patience,
   type Window,
 } from './browser.js';
+import { aBusyRunner } from '../busy-runner.js';
 import { before, point } from './viewed.js';
 
 vi.setConfig({ testTimeout: patience, hookTimeout: patience });
@@ -420,7 +422,71 @@ const completed: ViewedEnd = {
   outcome: 'conforms',
   safety: [{ what: 'load', confirmed: true, text: 'The load is off; it was read back.' }],
   record: 'runs/20261202T120000Z-K1-quick-look',
+  report: 'runs/20261202T120000Z-K1-quick-look/report.html',
 };
+
+describe('while what the record shows is worked out', () => {
+  it('the silent runner raises no alarm, nothing is left to stop, and then the same page has the end', async () => {
+    const runner = await aBusyRunner({ ...before, step: 2, input: 'off', figures: { voltage: 15.2 } });
+    await openAt(window, runner.address);
+    const { page, complaints } = window;
+    await page.getByRole('button', { name: /^Stop/ }).focus();
+    await page.evaluate(`new MutationObserver(() => {
+      if (!document.getElementById('lost').hidden) document.body.dataset.alarmed = 'yes';
+    }).observe(document.getElementById('lost'), { attributes: true })`);
+    runner.workOut(3 * patienceWithRunner, completed);
+    await page.locator('#ending-heading', { hasText: /^The run is over$/ }).waitFor();
+    const words = await page.locator('#ending-text').innerText();
+    expect(words).toMatch(/^The load is off; it was read back\.\s+Working out what the record shows\./);
+    expect(await page.locator('#load-word').innerText()).toBe('Load off');
+    expect(await page.locator('#line').innerText()).toBe('the run is over');
+    expect(await page.title()).toBe('The run is over · K1 · railproof');
+    expect(await page.locator('#stop').isHidden()).toBe(true);
+    expect(await atKeyboard(page)).toBe('ending-heading');
+    await page.keyboard.press('Escape');
+    await page.keyboard.press('Escape');
+    await heardOf(page, '#status');
+    await nobodyShutOut(page);
+    await page.locator('#ending-heading', { hasText: 'Conforms' }).waitFor();
+    expect(await page.evaluate('document.body.dataset.alarmed')).toBeUndefined();
+    expect(await page.locator('#lost').isHidden()).toBe(true);
+    expect(await page.locator('#trouble').isHidden()).toBe(true);
+    expect(await atKeyboard(page)).toBe('ending-heading');
+    expect(complaints).toEqual([]);
+  });
+
+  it('a runner that is gone is said to be, with the bench as it was left', async () => {
+    const runner = await aBusyRunner({ ...before, step: 2, input: 'off' });
+    await openAt(window, runner.address);
+    const { page } = window;
+    runner.workOut(3600, completed);
+    await page.locator('#ending-heading', { hasText: /^The run is over$/ }).waitFor();
+    process.kill(runner.pid, 'SIGKILL');
+    await page.locator('#lost', { hasText: 'Nobody answers at this address' }).waitFor();
+    const words = await page.locator('#lost').innerText();
+    expect(words).toContain('The load is off; it was read back.');
+    expect(words).toContain(`railproof analyse ${completed.record}`);
+    expect(words).not.toContain('may still be on');
+    await nobodyShutOut(page);
+  });
+});
+
+describe('a page that nobody saw for a while', () => {
+  it('looks at once when it is seen again, and not when its clock comes round', async () => {
+    const runner = await aBusyRunner({ ...before, step: 2, input: 'on' });
+    const hidden = await openWindow(browser, 'as-it-is');
+    const { page } = hidden;
+    // As a browser does to a page that is hidden for long, and more so.
+    await page.addInitScript('window.setInterval = () => 0');
+    await openAt(hidden, runner.address);
+    process.kill(runner.pid, 'SIGSTOP');
+    await page.waitForTimeout((patienceWithRunner + 1.5) * 1000);
+    expect(await page.title()).toBe('Load on · K1 · railproof');
+    await page.evaluate(`document.dispatchEvent(new Event('visibilitychange'))`);
+    expect(await page.title()).toBe('No word · K1 · railproof');
+    await page.context().close();
+  });
+});
 
 describe('at the end', () => {
   const unsafe = {
@@ -449,7 +515,7 @@ describe('at the end', () => {
       const words = await page.locator('#ending-text').innerText();
       for (const { text } of end.safety ?? completed.safety) expect(words.indexOf(text)).toBe(0);
       expect(words).toContain('Load it continuously with up to 3.18 A.');
-      expect(words).toContain('runs/20261202T120000Z-K1-quick-look');
+      expect(words).toMatch(/Report: runs\/\S+-quick-look\/report\.html\s+Record: runs\/\S+-quick-look$/);
       expect(await page.locator('#line').innerText()).toBe('the run is over');
       await heardOf(page, end.safety === undefined ? '#status' : '#alarm');
       if (end.how === undefined) await nobodyShutOut(page);

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
-import { lineOf, patience } from '../../../src/view/page/silence.js';
+import { lineOf, patience, patienceWhileBusy } from '../../../src/view/page/silence.js';
 
-const listening = { since: 10, heard: 20, why: 'silent', ended: false } as const;
+const listening = { since: 10, heard: 20, why: 'silent', stage: 'under-way' } as const;
 
 describe('the line to the runner', () => {
   it('is live while a word came within the last three seconds', () => {
@@ -31,7 +31,15 @@ describe('the line to the runner', () => {
     });
   });
 
+  it('may be silent for long while the record keeps the runner busy, but not for ever, nor broken', () => {
+    const busy = { ...listening, stage: 'working-out' } as const;
+    for (const now of [20, 20 + patience + 1, 20 + patienceWhileBusy])
+      expect(lineOf(busy, now)).toEqual({ kind: 'working-out' });
+    expect(lineOf(busy, 81)).toEqual({ kind: 'lost', seconds: 61, why: 'silent' });
+    expect(lineOf({ ...busy, why: 'unreachable' }, 24)).toMatchObject({ kind: 'lost', seconds: 4 });
+  });
+
   it('is over, and no alarm, once the run has ended', () => {
-    expect(lineOf({ ...listening, ended: true }, 1e6)).toEqual({ kind: 'over' });
+    expect(lineOf({ ...listening, stage: 'over' }, 1e6)).toEqual({ kind: 'over' });
   });
 });

@@ -26,6 +26,7 @@ export const before: ViewState = {
   question: undefined,
   notices: [],
   stopping: false,
+  workingOut: undefined,
   ended: undefined,
 };
 

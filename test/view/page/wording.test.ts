@@ -3,6 +3,7 @@ import { parseQuantity } from '../../../src/quantity/parse-quantity.js';
 import { dimensions, type Dimension } from '../../../src/quantity/quantity.js';
 import {
   ageWords,
+  answerWords,
   endShown,
   expectedWords,
   lineWords,
@@ -14,7 +15,7 @@ import {
   timesWords,
   titleWords,
 } from '../../../src/view/page/wording.js';
-import type { ViewedEnd } from '../../../src/view/view-state.js';
+import type { ViewedEnd, ViewedLeft } from '../../../src/view/view-state.js';
 import { before } from './viewed.js';
 
 const live = { kind: 'live' } as const;
@@ -27,6 +28,7 @@ const ended: ViewedEnd = {
   outcome: 'conforms',
   safety: [{ what: 'load', confirmed: true, text: 'The load is off; it was read back.' }],
   record: 'runs/one',
+  report: 'runs/one/report.html',
 };
 const unsafe: ViewedEnd = {
   ...ended,
@@ -36,7 +38,7 @@ const unsafe: ViewedEnd = {
 describe('of a lost runner the page says', () => {
   it('for how long nothing was heard, that all is old, that the load may be on, and what to do', () => {
     expect(lostHeading(lost)).toBe('No word from the runner for 4 s');
-    const words = lostWords(lost, true).join(' ');
+    const words = lostWords(lost, before).join(' ');
     expect(words).toContain('What stands below is old.');
     expect(words).toContain('The load may still be on. Look at the terminal.');
     expect(words).toContain('If in doubt cut the power by hand.');
@@ -44,8 +46,8 @@ describe('of a lost runner the page says', () => {
   });
 
   it('why, where that is known', () => {
-    expect(lostWords({ ...lost, why: 'unreachable' }, true).join(' ')).toContain('Nobody answers');
-    const refused = lostWords({ ...lost, why: 'refused' }, false).join(' ');
+    expect(lostWords({ ...lost, why: 'unreachable' }, before).join(' ')).toContain('Nobody answers');
+    const refused = lostWords({ ...lost, why: 'refused' }, undefined).join(' ');
     expect(refused).toContain('Open the address again that the terminal shows');
     expect(refused).not.toContain('goes on trying');
     expect(refused).not.toContain('What stands below');
@@ -126,6 +128,50 @@ describe('the steps', () => {
   it('say what has gone and about what remains', () => {
     expect(timesWords({ ...before, elapsed: 65, remaining: 26 })).toBe('1 min 5 s gone, about 26 s to go');
     expect(timesWords({ ...before, elapsed: 65, ended })).toBe('1 min 5 s gone');
+  });
+});
+
+describe('while the record is worked out', () => {
+  const left: ViewedLeft = { how: 'completed', reason: null, safety: ended.safety, record: 'runs/one' };
+  const atWork = { ...before, step: 2, input: 'on', workingOut: left } as const;
+  const busy = { kind: 'working-out' } as const;
+
+  it('the run is over and what the record shows is said to be under way', () => {
+    expect(endShown(left)).toEqual({ heading: 'The run is over', look: 'plain' });
+    expect(answerWords(left).join(' ')).toMatch(/^Working out what the record shows\./);
+    expect(answerWords({ ...ended, answer: ['It holds.'] })).toEqual(['It holds.']);
+    expect(lineWords(busy)).toBe('the run is over');
+    expect(titleWords(atWork, busy)).toBe('The run is over · K1');
+    expect(stepWords(atWork)).toBe('All 2 steps are done.');
+    expect(standingOf(2, atWork)).toBe('done');
+    expect(timesWords({ ...atWork, elapsed: 65 })).toBe('1 min 5 s gone');
+  });
+
+  it('the load is what was read back at the end, and the bench comes first where that could not be', () => {
+    expect(loadWords(atWork, busy)).toBe('Load off');
+    const unsure = { ...atWork, workingOut: { ...left, safety: unsafe.safety } };
+    expect(loadWords(unsure, busy)).toBe('Load may still be on');
+    expect(titleWords(unsure, busy)).toBe('Look at the bench first · K1');
+  });
+
+  it('why it was stopped or failed is said at once', () => {
+    const stopped = { ...left, how: 'stopped', reason: 'stopped in the live view' } as const;
+    expect(endShown(stopped).heading).toBe('Stopped in the live view');
+    expect(stepWords({ ...atWork, workingOut: stopped })).toBe('Ended in step 2 of 2.');
+    expect(endShown({ ...left, how: 'failed', reason: 'the load does not answer' }).heading).toBe(
+      'Failed: the load does not answer',
+    );
+  });
+
+  it('a runner that no longer answers is said not to, with the bench as it was last told', () => {
+    const words = lostWords({ ...lost, seconds: 61 }, atWork);
+    expect(words[0]).toBe('The load is off; it was read back.');
+    expect(words.join(' ')).toContain('no longer answers. Look at the terminal.');
+    expect(words.join(' ')).toContain('railproof analyse runs/one');
+    expect(words.join(' ')).not.toMatch(/may still be on|watchman/);
+    const source = { what: 'source', confirmed: false, text: 'Nobody knows of the source.' } as const;
+    const unsure = { ...left, safety: [...left.safety, source] };
+    expect(lostWords(lost, { ...atWork, workingOut: unsure })[0]).toBe(source.text);
   });
 });
 
