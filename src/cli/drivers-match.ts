@@ -15,6 +15,7 @@ import { connectors } from './connectors.js';
 import type { MatchJson } from './schema/match-schema.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
+import { whenAborted } from './when-aborted.js';
 import { shelves, shipped } from './wiring.js';
 
 /** `railproof drivers --match`: which of the shipped families an instrument belongs to, by harmless questions. */
@@ -28,7 +29,7 @@ export async function matchOut(
   const clock = address.kind === 'replay' ? new VirtualClock(realClock.wall()) : realClock;
   const connection = await connectors(clock)(address, anyOf(drivers), 'instrument');
   const stop = stopOnSignals(streams);
-  stop.hurry.addEventListener('abort', () => void connection.close(), { once: true });
+  whenAborted(stop.hurry, () => void connection.close());
   const answered: string[] = [];
   try {
     streams.stderr.write(`${printable(connection.address)}: asking what does no harm; this takes a while\n`);

@@ -20,6 +20,7 @@ import type { Streams } from './streams.js';
 import { countLine, meetingText, paceText, resultText, trialAsJson } from './trial-shown.js';
 import { TrialUsageError } from './trial-usage.js';
 import { trialFiles, writeAdapted, writeDialogue } from './trial-written.js';
+import { whenAborted } from './when-aborted.js';
 import { shelves } from './wiring.js';
 
 export interface TryWanted {
@@ -50,7 +51,7 @@ export async function tryOut(wanted: TryWanted, streams: Streams): Promise<ExitC
   const written: string[] = [];
   let trial: Partial<Trial> = {};
   const stop = stopOnSignals(streams);
-  stop.hurry.addEventListener('abort', () => void connection.close(), { once: true });
+  whenAborted(stop.hurry, () => void connection.close());
   let ending: Ending = { how: 'as-it-should' };
   try {
     if (!json) streams.stderr.write(`${driver.name} at ${printable(connection.address)}\n`);

@@ -16,6 +16,7 @@ import { errorText } from './error-text.js';
 import { say } from './say.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
+import { whenAborted } from './when-aborted.js';
 import { type DriverFiles, planDrivers, readBenchDrivers, type World, worldOf } from './wiring.js';
 
 /**
@@ -31,7 +32,7 @@ export async function safe(wanted: { readonly bench: string }, streams: Streams)
     const drivers = await driversFor(file, ['load']);
     const { connect: anew, clock } = await worldOf(file.value, planDrivers(drivers));
     const connections = new Connections(anew);
-    stop.hurry.addEventListener('abort', () => void connections.giveUp(), { once: true });
+    whenAborted(stop.hurry, () => void connections.giveUp());
     const way = { connect: connections.connect, clock };
     const load = await makeSafeUnopened({ bench: file.value, drivers: planDrivers(drivers), ...way });
     tell('load', load, drivers, streams);
