@@ -3,6 +3,8 @@ import { formatQuantity } from '../../quantity/format-quantity.js';
 import type { RunHeader } from '../../record/run-header.js';
 import { plateInWords } from '../record-heading.js';
 import type { Result } from '../result.js';
+import { doneBetween } from './done-between.js';
+import { instrumentsAlike } from './instruments-alike.js';
 
 /**
  * What is not alike in two records and bears on how far they can be compared, and what was done to the modules in
@@ -19,7 +21,7 @@ export function unlikeIn(before: Result, after: Result): readonly string[] {
     ...procedures(then, now),
     ...benches(then, now),
     ...air(then, now),
-    ...instruments(then, now),
+    ...instrumentsAlike(then, now),
     ...deratings(then, now),
   ];
 }
@@ -43,22 +45,6 @@ function plates(then: RunHeader, now: RunHeader): readonly string[] {
     : [
         `The nameplates differ: ${of(then)}, then ${of(now)}. What is given in % of them is of different wholes.`,
       ];
-}
-
-/** What stands in the later module's file and not in the earlier one's, of modules of one name. */
-function doneBetween(then: RunHeader, now: RunHeader): readonly string[] {
-  return now.modules.flatMap(({ name, changes }) => {
-    const earlier = then.modules.find((module) => module.name === name);
-    if (earlier === undefined) return [];
-    const known = new Set(earlier.changes.map(written));
-    return changes
-      .filter((change) => !known.has(written(change)))
-      .map(({ date, what }) => `Done to ${name} in between, by its file: ${what} (${date}).`);
-  });
-}
-
-function written({ date, what }: RunHeader['modules'][number]['changes'][number]): string {
-  return `${date} ${what}`;
 }
 
 const wired = { single: 'one module alone', parallel: 'modules in parallel', series: 'modules in series' };
@@ -93,13 +79,20 @@ function benches({ bench: then }: RunHeader, { bench: now }: RunHeader): readonl
       ? []
       : ['One of the two was made on a simulated bench: it says nothing of a real module.']),
     ...(then.name === now.name ? [] : [`The benches differ: ${then.name}, then ${now.name}.`]),
-    ...(then.voltageFrom === now.voltageFrom
-      ? []
-      : [
-          'The voltage was read at the module in one and at the load in the other: what the leads lose is in one.',
-        ]),
+    ...voltageRead(then, now),
     ...(JSON.stringify(then.leads) === JSON.stringify(now.leads) ? [] : ['The leads differ.']),
     ...(JSON.stringify(then.places) === JSON.stringify(now.places) ? [] : ['The ballasts differ.']),
+  ];
+}
+
+function voltageRead(then: RunHeader['bench'], now: RunHeader['bench']): readonly string[] {
+  if (then.voltageFrom === now.voltageFrom) return [];
+  const [atModule, atLoad] =
+    then.voltageFrom === 'meter-at-module' ? ['earlier', 'later'] : ['later', 'earlier'];
+  return [
+    `The voltage was read at the module in the ${atModule} record and at the load in the ${atLoad} one. There what the ` +
+      'leads lose was added by calculation, and what their resistance may be wrong by is in the uncertainties of that ' +
+      'record only.',
   ];
 }
 
@@ -112,23 +105,6 @@ function air(
   if (apart <= Math.hypot(then.uncertainty, now.uncertainty)) return [];
   const [was, is] = [then, now].map(({ temperature }) => formatQuantity(temperature, 'temperature'));
   return [`The air was at ${was ?? ''}, then at ${is ?? ''}: a warmer module may limit at another current.`];
-}
-
-function instruments({ instruments: then }: RunHeader, { instruments: now }: RunHeader): readonly string[] {
-  const roles = [...new Set([...then, ...now].map(({ role }) => role))];
-  const identityOf = (of: RunHeader['instruments'], role: string): string | undefined =>
-    of.find((each) => each.role === role)?.identity;
-  const other = roles.filter((role) => identityOf(then, role) !== identityOf(now, role));
-  if (other.length === 0) {
-    return [
-      'Both were made with the same instruments. Part of their error is common to both and falls out of a ' +
-        'difference, so the uncertainties given for differences are rather too wide: the cautious side.',
-    ];
-  }
-  return [
-    `Other instruments: the ${listed(other)} ${other.length === 1 ? 'is' : 'are'} not the same. Their errors are ` +
-      'independent, as the uncertainties of the differences take them.',
-  ];
 }
 
 function deratings({ derating: then }: RunHeader, { derating: now }: RunHeader): readonly string[] {

@@ -144,7 +144,12 @@ describe('what two records are compared by', () => {
     ...header,
     began: '2026-11-01T00:00:00.000Z',
     procedure: { ...header.procedure, name: 'acceptance' },
-    bench: { ...header.bench, name: 'corner bench', simulated: false },
+    bench: {
+      ...header.bench,
+      name: 'corner bench',
+      simulated: false,
+      voltageFrom: 'load-terminals' as const,
+    },
     modules: header.modules.map((module) => ({
       ...module,
       changes: [{ date: '2026-11-14', what: 'link from output to earth removed' }],
@@ -156,8 +161,15 @@ describe('what two records are compared by', () => {
     ['the procedures', 'The procedures differ: real-limit, then acceptance.'],
     ['the benches', 'The benches differ: nursery bench, then corner bench.'],
     ['a simulated bench', 'One of the two was made on a simulated bench'],
-    ['the instruments', 'Other instruments: the load and meter are not the same.'],
-    ['what was done', 'Done to K1 in between, by its file: link from output to earth removed (2026-11-14).'],
+    ['the instruments', 'the load and meter are others in the later record.'],
+    [
+      'what was done',
+      'No longer in the file of K1, and it was there before: link from output to earth removed',
+    ],
+    [
+      'where the voltage was read',
+      'read at the module in the earlier record and at the load in the later one. There what the leads lose was added by calculation',
+    ],
     ['the order', 'The record that was given as the earlier one began after the other.'],
   ])('is said where it is not alike: %s', (_, sentence) => {
     expect(page(compared(moduleWith({}), moduleWith({}, changed)))).toContain(sentence);
