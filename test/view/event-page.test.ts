@@ -121,6 +121,19 @@ describe('a page that does not read', () => {
     expect(readsAgain).toHaveBeenCalledTimes(1);
   });
 
+  it('has what it was told out of this program only once it reads again, or nobody waits for it any more', async () => {
+    for (const ends of ['reads', 'goes away']) {
+      const { page: slow, reader } = await blocked();
+      let out = false;
+      const flushed = slow.flushed().then(() => (out = true));
+      for (let count = 0; count < 20; count += 1) await turn();
+      expect(out).toBe(false);
+      if (ends === 'reads') readAll(reader);
+      else reader.destroy();
+      await flushed;
+    }
+  });
+
   it('keeps nobody waiting once it went away', async () => {
     const { page: gone, response, reader } = await blocked();
     const end = gone.end();
@@ -129,6 +142,7 @@ describe('a page that does not read', () => {
     gone.tell(event);
     gone.beat(event);
     await gone.end();
+    await gone.flushed();
     expect(response.destroyed).toBe(true);
   });
 });
