@@ -5,6 +5,7 @@ import { answerInWords } from './changes.js';
 import { comparisonWarnings } from './comparison-warnings.js';
 import { type ComparedRecords, outcomeOf, titleOf, verdictWords } from './comparison.js';
 import { printable, printableData } from './printable.js';
+import { normalizedErrorInWords } from './normalized-error.js';
 import { inMinutes } from './in-minutes.js';
 import type { Result } from './result.js';
 import type { Style } from './style.js';
@@ -91,7 +92,7 @@ function cellsOf(compared: Compared): readonly string[] {
     before === undefined ? '' : valueInWords(before),
     after === undefined ? '' : valueInWords(after),
     difference === undefined ? '' : changeInWords(compared),
-    normalizedError === null ? '' : normalizedError.toFixed(2).replace(/^-(0\.00)$/, '$1'),
+    normalizedError === null ? '' : normalizedErrorInWords(normalizedError),
     expected === undefined ? '' : allowedInWords(expected, compared),
     outcome === 'does-not-conform' ? word.toUpperCase() : word,
     note,

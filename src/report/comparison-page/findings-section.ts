@@ -2,6 +2,7 @@ import { changeInWords } from '../../judgement/change-in-words.js';
 import { changesMissed, type Compared } from '../../judgement/compare.js';
 import { listed } from '../../quantity/listed.js';
 import { verdictWords, type ComparedRecords } from '../comparison.js';
+import { normalizedErrorInWords } from '../normalized-error.js';
 import { type Content, element, type Markup } from '../page/markup.js';
 import { section } from '../page/page.js';
 import { table } from '../page/table.js';
@@ -71,12 +72,8 @@ function differenceOf(compared: Compared): Content {
   const change = changeInWords(compared);
   if (difference === undefined || change === '') return '';
   const { normalizedError } = difference;
-  const ratio = normalizedError === null ? '' : `E_n ${signed(normalizedError)}`;
+  const ratio = normalizedError === null ? '' : `E_n ${normalizedErrorInWords(normalizedError)}`;
   return inOne([change, softly(ratio)]);
-}
-
-function signed(normalizedError: number): string {
-  return normalizedError.toFixed(2).replace(/^-(0\.00)$/, '$1');
 }
 
 function softly(text: string): Content {

@@ -6,6 +6,7 @@ import {
 } from '../../judgement/change-in-words.js';
 import { changesMissed, type Compared } from '../../judgement/compare.js';
 import { type ComparedRecords, outcomeOf } from '../comparison.js';
+import { normalizedErrorInWords } from '../normalized-error.js';
 import { modulesInWords } from '../record-heading.js';
 import { probabilityInWords } from '../record-words.js';
 import type { Result } from '../result.js';
@@ -87,7 +88,7 @@ function reasons(compared: Compared): string {
   return [
     `before ${before === undefined ? 'nothing' : valueInWords(before)}, after ${after === undefined ? 'nothing' : valueInWords(after)}`,
     ...(change === '' ? [] : [`change ${change}`]),
-    ...(normalized === null ? [] : [`normalized error ${normalized.toFixed(2)}`]),
+    ...(normalized === null ? [] : [`normalized error ${normalizedErrorInWords(normalized)}`]),
     ...(expected === undefined ? [] : [`allowed: ${allowedInWords(expected, compared)}`]),
     ...(probability === null ? [] : [`conformance probability ${probabilityInWords(probability)}`]),
     ...(note === '' ? [] : [note]),
