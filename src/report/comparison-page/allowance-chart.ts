@@ -7,8 +7,7 @@ import { verdictWords, type ComparedRecords } from '../comparison.js';
 import type { Markup } from '../page/markup.js';
 import { figure } from '../page/figure.js';
 import { hasMoved } from './compared-words.js';
-
-const title = 'How far each moved, of what is allowed';
+import { oneInTwenty, verbsOf } from './movement-words.js';
 
 /** A quantity of which the tolerance says how far it may move, and by how much of that it did. */
 interface Allowed {
@@ -33,11 +32,15 @@ const briefly = { changed: 'changed', 'cannot-tell': 'cannot tell', unchanged: '
  * All quantities with a tolerance on one axis: between −100 % and 100 % is what is allowed. Undefined where there is
  * none in both records.
  */
-export function allowanceFigure({ comparison: { findings } }: ComparedRecords): Markup | undefined {
+export function allowanceFigure({
+  comparison: { findings, sameModules },
+}: ComparedRecords): Markup | undefined {
   const allowed = findings.flatMap(allowedOf);
   if (allowed.length === 0) return undefined;
   const edge = Math.min(furthest, Math.max(least, ...allowed.map(reach)) * 1.05);
   const rows = allowed.map(rowOf);
+  const { moved, move } = verbsOf(sameModules);
+  const title = `How far each ${moved}, of what is allowed`;
   return figure(
     title,
     spanRows({
@@ -54,16 +57,16 @@ export function allowanceFigure({ comparison: { findings } }: ComparedRecords): 
               {
                 from: { row, value: 0 },
                 to: { row, value: share },
-                says: `${compared.finding} moved by ${changeInWords(compared)}`,
+                says: `${compared.finding} ${moved} by ${changeInWords(compared)}`,
               },
             ]
           : [],
       ),
       key: keyOf(allowed),
     }),
-    'Shaded: allowed. The bars hold each difference with 95 %. An arrow from the middle marks what moved beyond its ' +
-      'uncertainty; what has none was not seen to move. Words, least values and what nothing is asked of are in the ' +
-      'tables only.',
+    'Shaded: allowed. The bars hold each difference with 95 %. An arrow from the middle marks what ' +
+      `${moved} beyond its uncertainty; what has none was not seen to ${move}, or nobody can tell. ` +
+      `${oneInTwenty(sameModules)} Words, least values and what nothing is asked of are in the tables only.`,
   );
 }
 

@@ -8,7 +8,8 @@ import { element, type Markup } from '../page/markup.js';
 import { section } from '../page/page.js';
 import { table } from '../page/table.js';
 import { figure } from '../page/figure.js';
-import { allowanceInWords, hasMoved, movedInWords, valuePlusMinus } from './compared-words.js';
+import { allowanceInWords, hasMoved, valuePlusMinus } from './compared-words.js';
+import { arrowInWords, seenInWords } from './movement-words.js';
 import { bothSides, type BothSides, type PageSide } from './sides.js';
 
 /**
@@ -17,12 +18,15 @@ import { bothSides, type BothSides, type PageSide } from './sides.js';
  */
 export function changesSection(records: ComparedRecords): Markup | undefined {
   const sides = bothSides(records);
+  const { sameModules } = records.comparison;
   const shown = records.comparison.findings.filter(
     (compared) => hasMoved(compared) || compared.verdict === 'cannot-tell',
   );
   const charts = shown.flatMap((compared, index) => {
     const both = measuredOf(compared);
-    return both === undefined ? [] : [chartOf(compared, both, sides, `change-${index + 1}`)];
+    return both === undefined
+      ? []
+      : [chartOf(compared, both, { sides, sameModules, id: `change-${index + 1}` })];
   });
   const words = shown.filter((compared) => measuredOf(compared) === undefined);
   if (shown.length === 0) return undefined;
@@ -56,13 +60,17 @@ function measuredOf({ before, after }: Compared): readonly [Measured, Measured] 
 function chartOf(
   compared: Compared,
   [then, now]: readonly [Measured, Measured],
-  [earlier, later]: BothSides,
-  id: string,
+  {
+    sides: [earlier, later],
+    sameModules,
+    id,
+  }: { readonly sides: BothSides; readonly sameModules: boolean; readonly id: string },
 ): readonly Markup[] {
   const { finding, tolerance, expected } = compared;
-  const isMoved = hasMoved(compared);
+  const moved = arrowInWords(compared, sameModules);
+  // What is allowed is so much of the earlier value, and nobody knows that where it is at least so much.
   const band =
-    tolerance === undefined || expected === undefined
+    tolerance === undefined || expected === undefined || then.bound !== undefined
       ? undefined
       : {
           from: then.value - tolerance,
@@ -70,6 +78,7 @@ function chartOf(
           says: `allowed: ${allowedInWords(expected, compared)}`,
         };
   const change = changeInWords(compared);
+  const by = change === '' ? '' : `${moved === undefined ? ':' : ' by'} ${change}`;
   return [
     element('h3', {}, finding),
     figure(
@@ -82,17 +91,12 @@ function chartOf(
         rows: [rowOf(then, earlier), rowOf(now, later)],
         roomForWords: 150,
         ...(band === undefined ? {} : { band }),
-        shifts: isMoved
-          ? [
-              {
-                from: { row: 0, value: then.value },
-                to: { row: 1, value: now.value },
-                says: `${finding} moved ${movedInWords(compared)}`,
-              },
-            ]
-          : [],
+        shifts:
+          moved === undefined
+            ? []
+            : [{ from: { row: 0, value: then.value }, to: { row: 1, value: now.value }, says: moved }],
       }),
-      `${isMoved ? 'It moved' : 'Not seen to move'}${change === '' ? '' : ` by ${change}`}; ${allowanceInWords(compared)}.`,
+      `${seenInWords('it', compared, sameModules)}${by}; ${allowanceInWords(compared)}.`,
     ),
   ];
 }

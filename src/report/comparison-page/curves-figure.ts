@@ -10,11 +10,11 @@ import type { Markup } from '../page/markup.js';
 import { heldSorts, idleSort } from '../run-charts/curve-points.js';
 import { foundInWords } from '../run-charts/in-words.js';
 import { figure } from '../page/figure.js';
-import { hasMoved, movedInWords } from './compared-words.js';
-import { bothSides, type PageSide } from './sides.js';
+import { hasMoved } from './compared-words.js';
+import { bothInWords, seenInWords, verbsOf } from './movement-words.js';
+import { bothSides, type PageSide, recordsShown } from './sides.js';
 import { turnRow } from './turn-row.js';
 
-const title = 'Voltage over current, both records';
 /** A line and its interval are bent: so many places of it are reckoned. */
 const linePlaces = 61;
 /** Fewer make no curve: a soak alone stays at one current. */
@@ -41,9 +41,12 @@ export function curvesFigure(records: ComparedRecords): Markup | undefined {
   const sorts = sides.map(pointsOf);
   const seen = sides.map((side) => ({ ...side, seen: curveSeen(side.result.evidence) }));
   if (seen.every((side) => side.seen.held.length < leastPoints)) return undefined;
+  const { sameModules } = records.comparison;
+  const drawn = sides.filter((_, index) => (sorts[index]?.points.length ?? 0) > 0);
+  const title = `Voltage over current, ${recordsShown(drawn)}`;
   const lines = seen.flatMap(lineOf);
   const found = turnsOf(records);
-  const rows = found.map(({ words, compared }) => turnRow(words, compared, sides));
+  const rows = found.map(({ words, compared }) => turnRow(words, compared, { sides, sameModules }));
   const [, furthest] = extremesOf([
     ...sorts.flatMap(({ points }) => points.map(({ x }) => x)),
     ...rows.flatMap(({ places }) => places.map(({ at }) => at)),
@@ -129,7 +132,7 @@ function inWords(sorts: readonly PointSort[], found: readonly Turn[]): string {
 }
 
 function caption(
-  { comparison: { findings } }: ComparedRecords,
+  { comparison: { findings, sameModules } }: ComparedRecords,
   lines: readonly ChartLine[],
   found: readonly Turn[],
 ): string {
@@ -142,14 +145,15 @@ function caption(
     lines.some(({ band }) => band === undefined) &&
       'Where no line could be laid through the points of a record they are joined.',
     droop !== undefined &&
-      `The droop ${hasMoved(droop) ? 'moved' : 'was not seen to move'}: ${movedInWords(droop)}.`,
-    found.length > 0 && `Below: where the curves turn, with 95 %; ${arrowsInWords(moved)}.`,
+      `${seenInWords('the droop', droop, sameModules)}: ${bothInWords(droop, sameModules)}.`,
+    found.length > 0 && `Below: where the curves turn, with 95 %; ${arrowsInWords(moved, sameModules)}.`,
   ];
   return said.filter((each) => each !== false).join(' ');
 }
 
-function arrowsInWords(moved: readonly string[]): string {
+function arrowsInWords(moved: readonly string[], sameModules: boolean): string {
+  const verbs = verbsOf(sameModules);
   return moved.length === 0
-    ? 'nothing of it was seen to move'
-    : `an arrow marks what moved: ${listed(moved)}`;
+    ? `nothing of it was seen to ${verbs.move}`
+    : `an arrow marks what ${verbs.moved}: ${listed(moved)}`;
 }

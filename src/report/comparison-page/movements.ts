@@ -1,37 +1,45 @@
 import { valueInWords } from '../../judgement/change-in-words.js';
 import type { Compared } from '../../judgement/compare.js';
 import { type Movement, movementOf } from '../../judgement/movement.js';
+import { capitalised } from '../../quantity/capitalised.js';
 import { listed } from '../../quantity/listed.js';
 import type { ComparedRecords } from '../comparison.js';
 import { type Content, element, type Markup } from '../page/markup.js';
 import { bullets, section } from '../page/page.js';
-import { allowanceInWords, movedInWords } from './compared-words.js';
+import { allowanceInWords } from './compared-words.js';
+import { bothInWords, oneInTwenty, verbsOf } from './movement-words.js';
 
 /**
  * What moved whatever may be, what did not, and what nobody can tell. What moved too far stands in the answer with its
  * numbers; here it is named only.
  */
-export function movementsSection({ comparison: { findings } }: ComparedRecords): Markup | undefined {
+export function movementsSection({
+  comparison: { findings, sameModules },
+}: ComparedRecords): Markup | undefined {
   if (findings.length === 0) return undefined;
   const of = (movement: Movement): readonly Compared[] =>
     findings.filter((compared) => movementOf(compared) === movement);
   const moved = of('moved');
+  const verbs = verbsOf(sameModules);
+  const lead = capitalised(verbs.moved);
+  const oneByOne = (as: string, some: readonly Compared[]): readonly Content[] =>
+    some.map((compared) => sentenceOf(as, compared, sameModules));
   const [within, unasked, wrong] = [
     moved.filter(({ outcome }) => outcome === 'conforms' || outcome === 'undecided'),
     moved.filter(({ outcome }) => outcome === 'not-judged'),
     moved.filter(({ outcome }) => outcome === 'does-not-conform'),
   ];
   return section(
-    'What moved and what did not',
+    sameModules ? 'What moved and what did not' : 'What differs and what does not',
     bullets(
       [
-        moved.length === 0 && 'Nothing moved by more than its uncertainty leaves open.',
-        ...inOne('Moved, and should not have', wrong),
-        ...oneByOne('Moved', within),
-        ...oneByOne('Moved, and nothing is asked of it', unasked),
-        ...inOne('Not seen to move', of('as-it-was')),
+        moved.length === 0 && `Nothing was seen to ${verbs.move} by more than its uncertainty leaves open.`,
+        ...inOne(`${lead}, and should not${sameModules ? ' have' : ''}`, wrong),
+        ...oneByOne(lead, within),
+        ...oneByOne(`${lead}, and nothing is asked of it`, unasked),
+        ...inOne(`Not seen to ${verbs.move}`, of('as-it-was')),
         ...oneByOne('Without an uncertainty, as it stands', of('as-it-stands')),
-        ...oneByOne('Can not be told', of('not-told').filter(isInBoth)),
+        ...oneByOne(`Whether it ${verbs.moved} can not be told`, of('not-told').filter(isInBoth)),
         ...alone('In the earlier record only', findings, 'before', 'after'),
         ...alone('In the later record only', findings, 'after', 'before'),
       ].filter((said) => said !== false),
@@ -39,8 +47,8 @@ export function movementsSection({ comparison: { findings } }: ComparedRecords):
     element(
       'p',
       { class: 'soft' },
-      'A finding moved when its two values are further apart than their uncertainties together leave open, ' +
-        'and a word when it is another one; how far it may is for the tolerance to say.',
+      `A finding ${verbs.moved} when its two values are further apart than their uncertainties together leave open, ` +
+        `and a word when it is another one; how far it may is for the tolerance to say. ${oneInTwenty(sameModules)}`,
     ),
   );
 }
@@ -50,15 +58,13 @@ function inOne(lead: string, findings: readonly Compared[]): readonly Content[] 
   return [[element('strong', {}, `${lead}: `), `${listed(findings.map(({ finding }) => finding))}.`]];
 }
 
-function oneByOne(lead: string, findings: readonly Compared[]): readonly Content[] {
-  return findings.map((compared) => {
-    const { finding, note, expected } = compared;
-    const asked = expected === undefined ? '' : `; ${allowanceInWords(compared)}`;
-    return [
-      element('strong', {}, `${lead}: `),
-      `${finding} ${movedInWords(compared)}${asked}${note === '' ? '' : `; ${note}`}.`,
-    ];
-  });
+function sentenceOf(lead: string, compared: Compared, sameModules: boolean): Content {
+  const { finding, note, expected } = compared;
+  const asked = expected === undefined ? '' : `; ${allowanceInWords(compared)}`;
+  return [
+    element('strong', {}, `${lead}: `),
+    `${finding} ${bothInWords(compared, sameModules)}${asked}${note === '' ? '' : `; ${note}`}.`,
+  ];
 }
 
 function isInBoth({ before, after }: Compared): boolean {

@@ -17,6 +17,14 @@ export type BothSides = readonly [earlier: PageSide, later: PageSide];
 export const earlierShape: Shape = 'circle';
 export const laterShape: Shape = 'diamond';
 
+/** Of which of the two a chart shows something: `both records`, `the earlier record only`. */
+export function recordsShown(shown: readonly PageSide[]): string {
+  const [only] = shown;
+  return shown.length === 1 && only !== undefined
+    ? `the ${only.look === 0 ? 'earlier' : 'later'} record only`
+    : 'both records';
+}
+
 export function bothSides({ before, after, comparison }: ComparedRecords): BothSides {
   const named = (word: string, { header }: Result): string =>
     comparison.sameModules ? word : `${word}, ${modulesInWords(header)}`;

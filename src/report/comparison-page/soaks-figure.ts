@@ -12,7 +12,7 @@ import type { ComparedRecords } from '../comparison.js';
 import type { Markup } from '../page/markup.js';
 import { amps, foundInWords } from '../run-charts/in-words.js';
 import { figure } from '../page/figure.js';
-import { hasMoved, movedInWords } from './compared-words.js';
+import { bothInWords, seenInWords } from './movement-words.js';
 import { bothSides, type PageSide } from './sides.js';
 
 const title = 'Temperature under load, both records';
@@ -30,6 +30,7 @@ export function soaksFigure(records: ComparedRecords): Markup | undefined {
   const soaks = bothSides(records).flatMap(soakOf);
   if (soaks.length < 2) return undefined;
   const rise = records.comparison.findings.find(({ finding }) => finding === 'temperature-rise');
+  const { sameModules } = records.comparison;
   const each = soaks.map(inWords).join(' ');
   return figure(
     title,
@@ -54,7 +55,7 @@ export function soaksFigure(records: ComparedRecords): Markup | undefined {
     each,
     rise === undefined
       ? ''
-      : ` The rise above the air ${hasMoved(rise) ? 'moved' : 'was not seen to move'}: ${movedInWords(rise)}.`,
+      : ` ${seenInWords('the rise above the air', rise, sameModules)}: ${bothInWords(rise, sameModules)}.`,
   );
 }
 

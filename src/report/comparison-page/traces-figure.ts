@@ -7,24 +7,25 @@ import type { ComparedRecords } from '../comparison.js';
 import type { Markup } from '../page/markup.js';
 import { amps, volts } from '../run-charts/in-words.js';
 import { figure } from '../page/figure.js';
-import { hasMoved, movedInWords } from './compared-words.js';
-import { bothSides, type PageSide } from './sides.js';
+import { hasMoved } from './compared-words.js';
+import { bothInWords } from './movement-words.js';
+import { bothSides, type PageSide, recordsShown } from './sides.js';
 import { turnRow } from './turn-row.js';
-
-const title = 'Past the limit, both records';
 
 /** What each gave while it was held at falling voltages; undefined where neither was. */
 export function tracesFigure(records: ComparedRecords): Markup | undefined {
   const sides = bothSides(records);
+  const { sameModules } = records.comparison;
   const sorts = sides.flatMap(tracedSorts);
   const short = records.comparison.findings.find(({ finding }) => finding === 'short-circuit-current');
-  const turns = short === undefined ? [] : [turnRow('into a short', short, sides)];
+  const turns = short === undefined ? [] : [turnRow('into a short', short, { sides, sameModules })];
   const points = sorts.flatMap((sort) => sort.points);
   if (points.length === 0) return undefined;
   const [, most] = extremesOf([
     ...points.map(({ x }) => x),
     ...turns.flatMap(({ places }) => places.map(({ at }) => at)),
   ]);
+  const title = `Past the limit, ${recordsShown(sides.filter(isTraced))}`;
   const [, top] = extremesOf(points.map(({ y }) => y));
   const counted = sorts
     .filter((sort) => sort.points.length > 0)
@@ -42,6 +43,10 @@ export function tracesFigure(records: ComparedRecords): Markup | undefined {
     }),
     styleInWords(records),
   );
+}
+
+function isTraced({ result }: PageSide): boolean {
+  return (curveSeen(result.evidence).trace?.points ?? []).length > 0;
 }
 
 function tracedSorts({ name, shape, look, result }: PageSide): readonly PointSort[] {
@@ -66,12 +71,13 @@ function said({ gives, voltage, current }: TracedAt): string {
   return `held at ${volts(voltage)} ${words[gives]} ${amps(current)}`;
 }
 
-function styleInWords({ comparison: { findings } }: ComparedRecords): string {
+function styleInWords({ comparison: { findings, sameModules } }: ComparedRecords): string {
   const style = findings.find(({ finding }) => finding === 'limit-style');
   if (style === undefined) return 'The style of the limit was told of neither.';
-  if (hasMoved(style)) return `The style of the limit changed ${movedInWords(style)}.`;
+  const both = bothInWords(style, sameModules);
+  if (hasMoved(style)) return `The style of the limit ${sameModules ? 'changed ' : 'differs: '}${both}.`;
   const { before, after } = style;
   return before !== undefined && before.value === after?.value
     ? `The style of the limit is ${String(after.value)} in both.`
-    : `The style of the limit: ${movedInWords(style)}.`;
+    : `The style of the limit: ${both}.`;
 }

@@ -3,19 +3,26 @@ import type { Compared } from '../../judgement/compare.js';
 import type { Comparable } from '../../judgement/difference.js';
 import type { TurnPlace, TurnRow } from '../chart/turn-rows.js';
 import { foundInWords } from '../run-charts/in-words.js';
-import { hasMoved, movedInWords } from './compared-words.js';
+import { arrowInWords } from './movement-words.js';
 import type { BothSides, PageSide } from './sides.js';
 
 /** Below the plot: where it turned in each record, and by an arrow that it moved. */
-export function turnRow(words: string, compared: Compared, [earlier, later]: BothSides): TurnRow {
-  const { finding, before, after } = compared;
+export function turnRow(
+  words: string,
+  compared: Compared,
+  { sides: [earlier, later], sameModules }: { readonly sides: BothSides; readonly sameModules: boolean },
+): TurnRow {
+  const { before, after } = compared;
   const places = [...placeOf(before, earlier, words), ...placeOf(after, later, words)];
   const which = before === undefined ? ', later only' : after === undefined ? ', earlier only' : '';
   const values = [
     ...new Set([before, after].flatMap((each) => (each === undefined ? [] : [valueInWords(each)]))),
   ];
-  const moved = hasMoved(compared) ? `${finding} moved ${movedInWords(compared)}` : undefined;
-  return { name: `${words} ${values.join(' → ')}${which}`, places, moved };
+  return {
+    name: `${words} ${values.join(' → ')}${which}`,
+    places,
+    moved: arrowInWords(compared, sameModules),
+  };
 }
 
 function placeOf(finding: Comparable | undefined, side: PageSide, words: string): readonly TurnPlace[] {
