@@ -1,5 +1,6 @@
 import { asGiven } from '../../analysis/in-words.js';
 import { formatQuantity } from '../../quantity/format-quantity.js';
+import type { RunHeader } from '../../record/run-header.js';
 import type { ComparedRecords } from '../comparison.js';
 import { inMinutes } from '../in-minutes.js';
 import { type Content, element, type Markup } from '../page/markup.js';
@@ -9,13 +10,15 @@ import { circuitInWords, modulesInWords, plateInWords, takenOverInWords } from '
 import { endedHow, type Result } from '../result.js';
 import { unlikeIn } from './unlike.js';
 
+type Module = RunHeader['modules'][number];
+
 /** What is compared with what, and what differs between the two besides the module. */
 export function basisSection({ before, after }: ComparedRecords): Markup {
   const unlike = unlikeIn(before, after);
   return section(
     'What is compared with what',
     table(
-      'The two records; what is not the same in both is in bold.',
+      'The two records. Below name and time, what is not the same in both is in bold.',
       [
         { heading: 'What', as: 'name' },
         { heading: 'Earlier', as: 'long' },
@@ -56,15 +59,10 @@ function aspectsOf(result: Result): Readonly<Record<string, string>> {
   const { how, reason } = endedHow(result);
   return {
     Modules: modulesInWords(header),
-    Description: modules
-      .map(({ description }) => description)
-      .filter(isSaid)
-      .join('; '),
-    Nameplate: modules.map(({ rated }) => plateInWords(rated)).join('; '),
+    Description: ofEach(modules, ({ description }) => [description].filter(isSaid)),
+    Nameplate: ofEach(modules, ({ rated }) => [plateInWords(rated)]),
     Circuit: circuitInWords(header).join(''),
-    'Changes so far': modules
-      .flatMap(({ changes }) => changes.map(({ date, what }) => `${date}: ${what}`))
-      .join('; '),
+    'Changes so far': ofEach(modules, ({ changes }) => changes.map(({ date, what }) => `${date}: ${what}`)),
     Procedure: `${procedure.name}: ${procedure.title}`,
     Ended: how === 'completed' ? 'completed' : `${how}${reason === null ? '' : `: ${reason}`}`,
     Bench: `${bench.name}${bench.simulated ? ', simulated' : ''}`,
@@ -74,6 +72,15 @@ function aspectsOf(result: Result): Readonly<Record<string, string>> {
       bench.ambient === undefined ? '' : formatQuantity(bench.ambient.temperature, 'temperature'),
     'Taken over': takenOverInWords(evidence).join('; '),
   };
+}
+
+/** What is said of each module; of several with its name: `K1: 15 V, 4 A; K2: 15 V, 5 A`. */
+function ofEach(modules: readonly Module[], said: (module: Module) => readonly string[]): string {
+  return modules
+    .flatMap((module) =>
+      said(module).map((text) => (modules.length === 1 ? text : `${module.name}: ${text}`)),
+    )
+    .join('; ');
 }
 
 function isSaid(text: string): boolean {

@@ -40,10 +40,14 @@ function order({ began: then }: RunHeader, { began: now }: RunHeader): readonly 
 
 function plates(then: RunHeader, now: RunHeader): readonly string[] {
   const of = ({ modules }: RunHeader): string => modules.map(({ rated }) => plateInWords(rated)).join('; ');
+  const named = (header: RunHeader): string =>
+    header.modules.length === 1
+      ? of(header)
+      : header.modules.map(({ name, rated }) => `${name} ${plateInWords(rated)}`).join('; ');
   return of(then) === of(now)
     ? []
     : [
-        `The nameplates differ: ${of(then)}, then ${of(now)}. What is given in % of them is of different wholes.`,
+        `The nameplates differ: ${named(then)}, then ${named(now)}. What is given in % of them is of different wholes.`,
       ];
 }
 

@@ -176,6 +176,30 @@ describe('what two records are compared by', () => {
     expect(page(limitMoved)).not.toContain(sentence);
   });
 
+  it('is said of each module of a group by its name, and of one alone without', () => {
+    const group = page(fourTwins);
+    expect(group).toContain('W1: 15 V, 4 A; W2: 15 V, 4 A; W3: 15 V, 4 A; W4: 15 V, 4 A');
+    expect(group).toContain('W2: 15 V brick from a retired label printer');
+    const alone = page(limitMoved);
+    expect(alone).not.toContain('K1: 15 V');
+    const done = (index: number) => [{ date: '2026-11-14', what: `fan of number ${index} replaced` }];
+    const modules = fourTwins.after.header.modules.map((module, index) => ({
+      ...module,
+      rated: { ...module.rated, current: 4 + index },
+      changes: index === 2 ? done(3) : [],
+    }));
+    const after = { ...fourTwins.after, header: { ...fourTwins.after.header, modules } };
+    const text = page({ ...fourTwins, after });
+    expect(text).toContain('<strong>W3: 2026-11-14: fan of number 3 replaced</strong>');
+    expect(text).toContain('then W1 15 V, 4 A; W2 15 V, 5 A; W3 15 V, 6 A; W4 15 V, 7 A.');
+  });
+
+  it('has all in bold that its caption says, which leaves out name and time', () => {
+    const text = page(limitMoved);
+    expect(text).toContain('Below name and time, what is not the same in both is in bold.');
+    expect(text).toMatch(/<t[dh][^>]*>before<\/t[dh]><t[dh][^>]*>after<\/t[dh]>/);
+  });
+
   it('says of one record with itself that it is one', () => {
     expect(page(nothingMoved)).toContain('Both are one and the same record.');
   });
