@@ -57,6 +57,12 @@ describe('a quantity in two records', () => {
     expect(compared(amps(5, 0.03), amps(5.25, 0.04), absolute(0.25)).probability).toBeCloseTo(0.5, 9);
   });
 
+  it('below nothing is allowed a share of its size', () => {
+    const one = compared(amps(-5, 0.03), amps(-5.1, 0.04), share(0.05));
+    expect(one.tolerance).toBeCloseTo(0.25, 12);
+    expect(one.verdict).toBe('unchanged-within-tolerance');
+  });
+
   it('is never unchanged by a tolerance that is below its uncertainty', () => {
     expect(compared(amps(5, 0.03), amps(5, 0.04), absolute(0.04)).verdict).toBe('cannot-tell');
   });
@@ -209,6 +215,21 @@ describe('two records', () => {
     expect(compare(before, { ...before, modules: ['K2'] }, [])).toMatchObject({
       sameModules: false,
       findings: [{ verdict: 'not-compared' }, { verdict: 'not-compared' }],
+    });
+  });
+
+  it('are shown in the order of the later one, and then what only the earlier one has', () => {
+    const [a, b, c] = ['a', 'b', 'c'].map((name) => amps(5, 0.03, { name })) as [Finding, Finding, Finding];
+    const { findings } = compare(side(c, a, b), side(b, a), []);
+    expect(findings.map(({ finding }) => finding)).toEqual(['b', 'a', 'c']);
+  });
+
+  it('a name without a star stands for itself alone', () => {
+    const ofK1 = side(amps(5, 0.03, { name: 'usable-current-of-K1' }));
+    const asked = [{ finding: 'usable-current', expected: share(0.05) }];
+    expect(compare(ofK1, ofK1, asked)).toMatchObject({
+      findings: [{ verdict: 'not-compared' }],
+      inNeither: asked,
     });
   });
 

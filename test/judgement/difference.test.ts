@@ -56,6 +56,12 @@ describe('the difference of a finding between two records', () => {
     }
   });
 
+  it('has no E_n where either side is a bound only', () => {
+    const least = found(6, 0.1, { bound: 'least' });
+    expect(differenceOf(found(5, 0.1), least).normalizedError).toBeNull();
+    expect(differenceOf(least, found(5, 0.1)).normalizedError).toBeNull();
+  });
+
   it('is no share of an earlier value that may be nothing', () => {
     expect(differenceOf(found(0, 0), found(1, 0.1)).share).toBeNull();
     expect(differenceOf(found(0.01, 0.02), found(1, 0.1)).share).toBeNull();

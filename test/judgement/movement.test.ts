@@ -75,5 +75,13 @@ describe('a finding', () => {
     expect(moved(droopOf(0.018), least(0.02))).toBe('moved');
     expect(moved(droopOf(0.025), least(0.02))).toBe('not-told');
     expect(moved(least(0.018), least(0.03))).toBe('not-told');
+    expect(moved(least(0.03), least(0.018))).toBe('not-told');
+    // Less far than the uncertainties leave open.
+    expect(moved(least(0.018), droopOf(0.01795))).toBe('not-told');
+  });
+
+  it('of which an interval says nothing can not be told', () => {
+    const anything: Finding = { ...droopOf(0.018), interval: [-Infinity, Infinity] };
+    expect(moved(anything, droopOf(0.03))).toBe('not-told');
   });
 });
