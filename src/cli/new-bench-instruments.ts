@@ -207,6 +207,11 @@ function askDriver(
     read: async (answer) => {
       const numbered = /^\d{1,3}$/.test(answer) ? ofRole[Number(answer) - 1]?.name : undefined;
       const name = numbered ?? answer;
+      if (/^(tcp|serial|simulated):/.test(name))
+        throw new UnfitAnswerError(
+          'that is where it is, and what is asked for now is its driver',
+          'give a number or a name of the list above',
+        );
       const driver = (await readDriver(name, shelf)).value;
       if (driver.role === role) return { name, driver };
       throw new UnfitAnswerError(`${driver.name} is a driver for a ${driver.role}, and a ${role} is needed`);

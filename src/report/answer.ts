@@ -51,6 +51,8 @@ function asFarAs(result: Result): string {
 /** Who reads one line only must not take what is not accepted, or not tried to its end, for something to be used. */
 function loaded(it: string, whole: boolean, outcome: Result['outcome']): string {
   if (outcome === 'does-not-conform') return `by its limits alone ${it} could be loaded continuously`;
+  if (whole && outcome === 'undecided')
+    return `if it conforms, which is undecided, ${it} may be loaded continuously`;
   return whole ? `load ${it} continuously` : `${it} could be loaded continuously`;
 }
 

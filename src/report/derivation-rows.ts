@@ -11,7 +11,12 @@ export function derivationRows(findings: readonly Finding[]): readonly Derivatio
   if (recommended === undefined || usable === undefined) return [];
   const amps = (value: number): string => formatQuantity(value, 'current', { significant: 4 });
   return [
-    ['', amps(Number(usable.value)), 'usable-current', usable.note],
+    [
+      '',
+      amps(Number(usable.value)),
+      'usable-current',
+      usable.bound === 'least' ? `at least: ${usable.note}` : usable.note,
+    ],
     ...recommended.factors.map(({ name, factor, reason }): DerivationRow => [
       '×',
       factor.toFixed(3),

@@ -45,6 +45,18 @@ describe('the answer', () => {
     );
   });
 
+  it('tells nobody to load what nobody can tell to conform', () => {
+    const undecided = {
+      ...resultOf(),
+      findings: [recommended(4), usable],
+      decisions: [],
+      outcome: 'undecided',
+    } as const;
+    expect(answer(undecided)[0]).toBe(
+      'If it conforms, which is undecided, it may be loaded continuously with up to 4.00 A.',
+    );
+  });
+
   it('keeps quiet about a limit that was not met, and about a style that could not be told', () => {
     expect(answerTo(recommended(4), usable)).toHaveLength(2);
     expect(

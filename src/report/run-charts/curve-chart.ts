@@ -207,6 +207,6 @@ function lineInWords({ line, regulated, held }: CurveSeen): string {
     `${formatQuantity(-fit.slope, 'resistance', { significant: 4 })} · I. The shaded band holds the line itself with ` +
     `95 %, by the scatter of its points about it (Student's t, ${fit.degreesOfFreedom} degrees of freedom): ` +
     `±${formatQuantity(expanded, 'voltage', { significant: 2 })} at ${amps(last)}. What the instruments may be ` +
-    'wrong by comes on top, and moves all of it alike.'
+    'wrong by comes on top.'
   );
 }
