@@ -27,7 +27,9 @@ import { runShipped } from './shipped-runs.js';
 import { textsInTheWay } from './texts-in-the-way.js';
 
 const made = { program: 'railproof test', date: new Date('2026-12-02T17:00:00Z') };
-const hostile = '"><script>document.title="gone"</script><img src=x onerror=alert(1)>'.repeat(3);
+const script = '"><script>document.title="gone"</script><img src=x onerror=alert(1)>';
+/** Markup, marks that turn the direction of writing, and 300 letters without a place to break. */
+const hostile = `${script}\u202e\u2067\u200f${'K'.repeat(300)}`;
 const kept = 'fixtures/runs';
 const overAll = ['How far each moved', 'Voltage over current', 'Later voltage less the earlier one'];
 
@@ -138,7 +140,9 @@ describe.skipIf(isMissing)('the page of a comparison in a browser (needs /usr/bi
         compared(moduleWith({}), moduleWith({ limit: 4.5 }, renamed)),
       );
       expect(heard).toHaveLength(1);
-      expect(await page.title()).toContain(hostile);
+      const shown = `${script}\\u202e\\u2067\\u200fK`;
+      expect(await page.title()).toContain(shown);
+      expect(await page.locator('h1').innerText()).toContain(shown);
       expect(await page.locator('script, img, [onload], [onerror]').count()).toBe(0);
       expect(await textsInTheWay(page)).toEqual([]);
       await page.setViewportSize({ width: 360, height: 800 });
