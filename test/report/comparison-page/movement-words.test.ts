@@ -5,7 +5,8 @@ import { comparisonPage } from '../../../src/report/comparison-page/comparison-p
 import { tracesFigure } from '../../../src/report/comparison-page/traces-figure.js';
 import { evenly } from '../../analysis/evidence-of.js';
 import { readChart } from '../chart/read-chart.js';
-import { limited } from '../run-charts/made-results.js';
+import { warming } from '../../analysis/soak-events.js';
+import { limited, soaked } from '../run-charts/made-results.js';
 import { compared, header, moduleWith } from './made-comparisons.js';
 
 const date = new Date('2026-12-02T17:00:00Z');
@@ -112,6 +113,38 @@ describe('a chart of what only one record has', () => {
     expect(titleOf(compared(without, withTrace))).toBe('Past the limit, the later record only');
     expect(titleOf(compared(withTrace, without))).toBe('Past the limit, the earlier record only');
     expect(titleOf(compared(withTrace, withTrace))).toBe('Past the limit, both records');
+  });
+});
+
+describe('what only one record has, or nobody knows wholly', () => {
+  it('stands once, with the record that has it', () => {
+    const text = page(holding([current(4)], []));
+    expect(text).toContain('<strong>In the earlier record only: </strong>usable-current 4.000 A.');
+    expect(text).not.toContain('In the later record only');
+    expect(text).not.toContain('Whether it moved can not be told: </strong>');
+  });
+
+  it('is a least value without an uncertainty in the table, and on no scale of what is allowed', () => {
+    const text = page(holding([current(3.99, 'least')], [current(5.08)]));
+    expect(text).toContain('at least<br>3.990 A');
+    expect(text).not.toContain('id="allowance-title"');
+    expect(page(holding([current(4)], [current(5.08)]))).toContain('id="allowance-title"');
+  });
+
+  it('has its warming drawn only beside that of the other', () => {
+    const soak = soaked({ temperature: (t) => warming(t) + 0.05 * Math.sin(7 * t), until: 1080 });
+    expect(page(compared(moduleWith({}), soak))).not.toContain('id="soaks-title"');
+    expect(page(compared(soak, soak))).toContain('id="soaks-title"');
+  });
+});
+
+describe('the table of findings', () => {
+  it('shouts what changed and must not, and gives a probability where nobody can tell', () => {
+    const wrong = page(holding([current(4)], [current(5)]));
+    expect(wrong).toContain('<span class="state bad">CHANGED</span>');
+    expect(wrong).not.toContain('with a probability of');
+    const open = page(holding([current(4)], [current(4.2)].map(widened)));
+    expect(open).toMatch(/within that with a probability of \d/);
   });
 });
 
