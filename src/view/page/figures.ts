@@ -11,9 +11,11 @@ const age = place('age');
 const section = age.parentElement;
 const rows = new Map<string, { readonly value: HTMLElement; readonly set: HTMLElement }>();
 
-export function showFigures(state: ViewState, seconds: number | undefined, line: Line): void {
-  for (const figure of figuresShown(state)) showFigure(figure);
+export function showFigures(state: ViewState, seconds: number | undefined, heard: Line): void {
   const isOver = leftBy(state) !== undefined;
+  // Of a run that is over they are the last ones, whether the runner is still heard or not.
+  const line: Line = isOver ? { kind: 'over' } : heard;
+  for (const figure of figuresShown(state)) showFigure(figure);
   write(heading, line.kind === 'lost' || isOver ? 'Last read' : 'Now');
   write(place('note'), !isOver ? (state.figures.note ?? '') : '');
   const any = Object.keys(state.figures).some((name) => name !== 'note' && name !== 'setCurrent');
@@ -21,7 +23,7 @@ export function showFigures(state: ViewState, seconds: number | undefined, line:
   write(age, text);
   section?.classList.toggle('old', old);
   section?.classList.toggle('aged', line.kind === 'lost');
-  section?.classList.toggle('past', isOver && line.kind !== 'lost');
+  section?.classList.toggle('past', isOver);
   const latest = !isOver ? state.notices.at(-1) : undefined;
   show(place('latest'), latest !== undefined);
   if (latest !== undefined)
