@@ -1,3 +1,4 @@
+import { basename } from 'node:path';
 import { exitCodeOf, exitCodes, type ExitCode, type RailproofError } from '../errors/railproof-error.js';
 import type { Driver } from '../files/driver.js';
 import type { FileRead } from '../files/read-text.js';
@@ -23,7 +24,7 @@ export function tell(
   if (understood.kind === 'result') streams.stdout.write(shown(understood.result, json, streams));
   streams.stderr.write(`record: ${printable(folder.path)}\n`);
   if (understood.kind === 'result' && understood.unkept === undefined)
-    streams.stderr.write(`report: ${printable(folder.report)}\n`);
+    streams.stderr.write(`report: ${basename(folder.report)}, in that folder\n`);
   if (ending.how !== 'completed') say(streams.stderr, errorText(atDriverLine(ending.error, drivers)));
   if (understood.kind === 'error') say(streams.stderr, errorText(understood.error));
   if (understood.kind === 'result' && understood.unkept !== undefined) {

@@ -59,8 +59,8 @@ describe('help', () => {
   it('of run shows an example that works', async () => {
     const { status, stdout, stderr } = await railproof([...(await exampleOf('run')), '--runs', folder]);
     expect(stdout).toContain('recommended-current');
-    const [, page = ''] = /^record: .*\nreport: (.*)$/m.exec(stderr) ?? [];
-    expect(readFileSync(page, 'utf8')).toContain('<!doctype html>');
+    const [, record = '', page = ''] = /^record: (.*)\nreport: (.*), in that folder$/m.exec(stderr) ?? [];
+    expect(readFileSync(join(record, page), 'utf8')).toContain('<!doctype html>');
     expect(status).toBe(0);
   });
 

@@ -26,7 +26,7 @@ function toldOf(unkept: RecordWriteError | undefined): string {
 }
 
 it('a run that has ended names its record, and the page that lies in it', () => {
-  expect(toldOf(undefined)).toContain(`record: ${kept}\nreport: ${kept}/report.html\n`);
+  expect(toldOf(undefined)).toContain(`record: ${kept}\nreport: report.html, in that folder\n`);
 });
 
 it('a page that could not be written is not named, and what is missing is', () => {
