@@ -53,14 +53,11 @@ function wrongly(compared: Compared, sameModules: boolean): string {
     string,
     string,
   ];
+  const differs = `${finding} differs, ${was} in the earlier record and ${is} in the later one`;
   if (difference === undefined || expected === undefined)
-    return sameModules
-      ? `${finding} changed ${change} and must not.`
-      : `${finding} differs, ${was} in the earlier record and ${is} in the later one, and must not.`;
-  const moved = sameModules
-    ? `moved from ${was} to ${is}`
-    : `differs, ${was} in the earlier record and ${is} in the later one`;
-  return `${finding} ${moved}, by ${change}; allowed is ${allowedInWords(expected, compared)}.`;
+    return sameModules ? `${finding} changed ${change} and must not.` : `${differs}, and must not.`;
+  const moved = sameModules ? `${finding} moved from ${was} to ${is}` : differs;
+  return `${moved}, by ${change}; allowed is ${allowedInWords(expected, compared)}.`;
 }
 
 function rightly({ finding, expected, verdict }: Compared): string {
