@@ -35,6 +35,11 @@ export interface PlanPerformed extends Performed {
     | { readonly kind: 'error'; readonly error: unknown };
 }
 
+/** Where the report of a run lies; undefined where none was written. */
+export function reportOf({ understood, folder }: PlanPerformed): string | undefined {
+  return understood.kind === 'result' && understood.unkept === undefined ? folder.report : undefined;
+}
+
 export interface PerformOptions {
   readonly runs: string;
   readonly operator: Operator;

@@ -6,7 +6,7 @@ import { printable, printableLines } from '../quantity/printable.js';
 import { atDriverLine } from './driver-line.js';
 import { errorText } from './error-text.js';
 import { statusOfOutcome } from './exit-status.js';
-import type { PlanPerformed } from './perform-plan.js';
+import { type PlanPerformed, reportOf } from './perform-plan.js';
 import { resumeHint } from './resume-hint.js';
 import { safetyWords } from './safety-words.js';
 import { say } from './say.js';
@@ -23,8 +23,8 @@ export function tell(
   const { understood, ending, folder, status } = performed;
   if (understood.kind === 'result') streams.stdout.write(shown(understood.result, json, streams));
   streams.stderr.write(`record: ${printable(folder.path)}\n`);
-  if (understood.kind === 'result' && understood.unkept === undefined)
-    streams.stderr.write(`report: ${basename(folder.report)}, in that folder\n`);
+  const report = reportOf(performed);
+  if (report !== undefined) streams.stderr.write(`report: ${basename(report)}, in that folder\n`);
   if (ending.how !== 'completed') say(streams.stderr, errorText(atDriverLine(ending.error, drivers)));
   if (understood.kind === 'error') say(streams.stderr, errorText(understood.error));
   if (understood.kind === 'result' && understood.unkept !== undefined) {

@@ -46,7 +46,7 @@ export const shell = `<!doctype html>
 <p class="answered" id="answered" hidden></p>
 <section class="ending" id="ending" aria-labelledby="ending-heading" hidden>
 <svg class="sign" id="ending-sign" viewBox="0 0 60 60" aria-hidden="true"></svg>
-<div><h2 id="ending-heading" tabindex="-1"></h2><div id="ending-text"></div></div>
+<div><h2 id="ending-heading" tabindex="-1"></h2><div id="ending-text"></div><p id="ending-busy" hidden></p></div>
 </section>
 <div class="sheet">
 <section class="now" aria-labelledby="figures-heading">
@@ -83,7 +83,7 @@ export const shell = `<!doctype html>
 </div>
 </main>
 <footer>
-<p><strong>Stop</strong>, or Esc pressed twice within a second, has the runner switch the load off and read it back, without asking again. It is not an emergency stop: where there is danger, cut the power by hand.</p>
+<p id="about-stop"><strong>Stop</strong>, or Esc pressed twice within a second, has the runner switch the load off and read it back, without asking again. It is not an emergency stop: where there is danger, cut the power by hand.</p>
 <p>This page only shows, answers and stops; everything else is done at the terminal that it was opened from.</p>
 </footer>
 </body>

@@ -6,7 +6,7 @@ import type { RunFolder } from '../../record/run-folder.js';
 import { answer } from '../../report/answer.js';
 import type { Performed } from '../../run/perform.js';
 import type { ViewedEnd, ViewedLeft } from '../../view/view-state.js';
-import type { PlanPerformed } from '../perform-plan.js';
+import { type PlanPerformed, reportOf } from '../perform-plan.js';
 import { safetyWords } from '../safety-words.js';
 
 /** How a run ended and left the bench, as a page tells it while its record is worked out. */
@@ -23,7 +23,6 @@ export function viewedLeft(performed: Performed, folder: RunFolder): ViewedLeft 
 /** The same, and what the record shows. */
 export function viewedEnd(performed: PlanPerformed): ViewedEnd {
   const { understood, folder } = performed;
-  const isWritten = understood.kind === 'result' && understood.unkept === undefined;
   return {
     ...viewedLeft(performed, folder),
     ...(understood.kind === 'result'
@@ -32,7 +31,7 @@ export function viewedEnd(performed: PlanPerformed): ViewedEnd {
           answer: [`What the record shows could not be told: ${messageOf(understood.error)}`],
           outcome: 'not-judged',
         }),
-    report: isWritten ? folder.report : null,
+    report: reportOf(performed) ?? null,
   };
 }
 

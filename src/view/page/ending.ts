@@ -1,7 +1,8 @@
 import type { ViewedEnd, ViewedLeft } from '../view-state.js';
 import { alarm, tell } from './announce.js';
 import { drawn, made, place, show, whenChanged, write } from './dom.js';
-import { answerWords, type EndShown, endShown, isWorkedOut } from './wording.js';
+import type { Line } from './silence.js';
+import { busyWords, type EndShown, endShown, isWorkedOut } from './wording.js';
 
 const signs: Readonly<Record<EndShown['look'], { readonly outline: string; readonly mark: string }>> = {
   good: { outline: 'M4 30a26 26 0 1 0 52 0a26 26 0 1 0 -52 0z', mark: 'M18 31L27 40L43 21' },
@@ -11,7 +12,13 @@ const signs: Readonly<Record<EndShown['look'], { readonly outline: string; reado
 };
 
 /** How the bench was left, as soon as that is known, and then what the run came to. */
-export const showEnding: (left: ViewedLeft | ViewedEnd | undefined) => void = whenChanged((left) => {
+export function showEnding(left: ViewedLeft | ViewedEnd | undefined, line: Line): void {
+  lay(left);
+  show(place('ending-busy'), line.kind === 'working-out');
+  write(place('ending-busy'), busyWords);
+}
+
+const lay: (left: ViewedLeft | ViewedEnd | undefined) => void = whenChanged((left) => {
   const section = place('ending');
   show(section, left !== undefined);
   if (left === undefined) return;
@@ -30,7 +37,7 @@ export const showEnding: (left: ViewedLeft | ViewedEnd | undefined) => void = wh
   else {
     const safe = left.safety.map(({ text }) => text);
     const over = how === 'completed' && !isWorkedOut(left) ? heading : `The run is over: ${heading}`;
-    tell([`${over}.`, ...safe, ...(isWorkedOut(left) ? [] : answerWords(left))].join(' '));
+    tell([`${over}.`, ...safe, ...(isWorkedOut(left) ? [] : [busyWords])].join(' '));
   }
 });
 
@@ -51,7 +58,7 @@ function words(left: ViewedLeft | ViewedEnd): readonly HTMLElement[] {
         ]
       : []),
     ...safe.map(({ text }) => made('p', { class: 'safety' }, text)),
-    ...answerWords(left).map((line) => made('p', {}, line)),
+    ...(isWorkedOut(left) ? left.answer : []).map((line) => made('p', {}, line)),
     ...(isWorkedOut(left) && left.report !== null ? [kept('Report', left.report)] : []),
     ...(record === '' ? [] : [kept('Record', record)]),
   ];

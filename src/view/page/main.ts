@@ -40,7 +40,7 @@ function shown(): void {
   showLoad(state, line);
   if (state === undefined) return;
   showRun(state);
-  showEnding(leftBy(state));
+  showEnding(leftBy(state), line);
   showStop(state, line);
   showQuestion(state);
   showFigures(state, readAt === undefined ? undefined : now() - readAt, line);

@@ -194,12 +194,8 @@ export function isWorkedOut(left: ViewedLeft | ViewedEnd): left is ViewedEnd {
   return 'outcome' in left;
 }
 
-/** What it came to, the answer first. */
-export function answerWords(left: ViewedLeft | ViewedEnd): readonly string[] {
-  return isWorkedOut(left)
-    ? left.answer
-    : ['Working out what the record shows. After a long run that takes a while.'];
-}
+/** Between how the bench was left and what the run came to, as long as the runner is heard or may be silent. */
+export const busyWords = 'Working out what the record shows. After a long run that takes a while.';
 
 const outcomes: Readonly<Record<ViewedEnd['outcome'], EndShown>> = {
   conforms: { heading: 'Conforms', look: 'good' },

@@ -436,8 +436,11 @@ describe('while what the record shows is worked out', () => {
     }).observe(document.getElementById('lost'), { attributes: true })`);
     runner.workOut(3 * patienceWithRunner, completed);
     await page.locator('#ending-heading', { hasText: /^The run is over$/ }).waitFor();
-    const words = await page.locator('#ending-text').innerText();
-    expect(words).toMatch(/^The load is off; it was read back\.\s+Working out what the record shows\./);
+    const words = await page.locator('#ending').innerText();
+    expect(words).toMatch(
+      /^The run is over\s+The load is off; it was read back\.\s+Record: runs\/\S+\s+Working out/,
+    );
+    expect(await page.locator('#about-stop').isHidden()).toBe(true);
     expect(await page.locator('#load-word').innerText()).toBe('Load off');
     expect(await page.locator('#line').innerText()).toBe('the run is over');
     expect(await page.title()).toBe('The run is over · K1 · railproof');
@@ -448,6 +451,7 @@ describe('while what the record shows is worked out', () => {
     await heardOf(page, '#status');
     await nobodyShutOut(page);
     await page.locator('#ending-heading', { hasText: 'Conforms' }).waitFor();
+    expect(await page.locator('#ending').innerText()).not.toContain('Working out');
     expect(await page.evaluate('document.body.dataset.alarmed')).toBeUndefined();
     expect(await page.locator('#lost').isHidden()).toBe(true);
     expect(await page.locator('#trouble').isHidden()).toBe(true);
@@ -467,6 +471,8 @@ describe('while what the record shows is worked out', () => {
     expect(words).toContain('The load is off; it was read back.');
     expect(words).toContain(`railproof analyse ${completed.record}`);
     expect(words).not.toContain('may still be on');
+    // Nobody works anything out any more.
+    expect(await page.locator('#ending').innerText()).not.toContain('Working out');
     await nobodyShutOut(page);
   });
 });
