@@ -2,7 +2,12 @@ import type { Amperes, Ohms, Ratio, Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import type { UncertainPart } from '../statistics/effective-freedom.js';
 import { mean } from '../statistics/checked.js';
-import { combine, type Contribution, rectangular } from '../statistics/uncertainty-budget.js';
+import {
+  combine,
+  type CombinedUncertainty,
+  type Contribution,
+  rectangular,
+} from '../statistics/uncertainty-budget.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence } from './evidence.js';
 import { believedStep, type PlaceLook, placeLooks, type PlaceRead } from './place-looks.js';
@@ -167,10 +172,18 @@ export function budgetOf(
   ];
 }
 
-/** How far off the current of one module may be, 95 %; by its place among the look's currents. */
+/**
+ * How far off the current of one module may be, by its place among the look's currents. Nobody else's current
+ * goes into it, so the others are left out: a look at a group costs in proportion to its modules.
+ */
+export function ownUncertainty(header: RunHeader, look: GroupLook, index: number): CombinedUncertainty {
+  const alone = { ...look, currents: look.currents.slice(index, index + 1) };
+  return combine(budgetOf(header, alone, { modules: [1] }));
+}
+
+/** The same as half-width of its interval, 95 %. */
 export function expandedCurrent(header: RunHeader, look: GroupLook, index: number): Amperes {
-  const alone = look.currents.map((_, other) => (other === index ? 1 : 0));
-  return combine(budgetOf(header, look, { modules: alone })).expanded;
+  return ownUncertainty(header, look, index).expanded;
 }
 
 function loadBudget(header: RunHeader, total: Amperes, weight: number): readonly Contribution[] {

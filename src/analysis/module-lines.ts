@@ -3,7 +3,7 @@ import { mean } from '../statistics/checked.js';
 import type { RunHeader } from '../record/run-header.js';
 import type { LineFit } from '../statistics/line-fit.js';
 import { type Contribution, combine } from '../statistics/uncertainty-budget.js';
-import { budgetOf, type GroupLook, meterOf, type ModuleCurrent } from './module-currents.js';
+import { type GroupLook, meterOf, type ModuleCurrent, ownUncertainty } from './module-currents.js';
 import { promised, promisedErrors } from './promised-errors.js';
 import type { Saturated } from './saturation.js';
 import { soundLine } from './sound-line.js';
@@ -73,8 +73,7 @@ function carryingPoints(
       const index = look.currents.findIndex(({ module }) => module === name);
       const each = look.currents[index];
       if (each === undefined || look.without === name) return [];
-      const alone = look.currents.map((_, other) => (other === index ? 1 : 0));
-      const { standardUncertainty } = combine(budgetOf(header, look, { modules: alone }));
+      const { standardUncertainty } = ownUncertainty(header, look, index);
       return each.current > clearly * standardUncertainty ? [each] : [];
     });
   const most = all.reduce((largest, { current }) => Math.max(largest, current), 0);
