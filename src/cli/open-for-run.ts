@@ -2,6 +2,7 @@ import { Connections } from '../bench/connections.js';
 import { FoundOnError } from '../bench/found-on.js';
 import { type BenchParts, type OpenBench, openBench } from '../bench/open-bench.js';
 import type { Connect } from '../instrument/connect.js';
+import { StoppedByOperator } from '../run/stopped.js';
 import { whenAborted } from './when-aborted.js';
 
 /** Of a run: what aborts `signal` is why it ends, and `hurry` comes after it, from whoever won't wait for an answer. */
@@ -28,9 +29,19 @@ export async function openForRun({ hurry, ...parts }: RunParts): Promise<OpenBen
   try {
     opened = await openBench({ ...parts, connect });
   } catch (error) {
-    if (hurry.aborted && parts.signal.aborted && !(error instanceof FoundOnError)) throw parts.signal.reason;
-    throw error;
+    if (!parts.signal.aborted || error instanceof FoundOnError) throw error;
+    throw error === parts.signal.reason || hurry.aborted ? beforeItWasOpen(parts.signal.reason) : error;
   }
   if (hurry.aborted) await opened.cut();
   return opened;
+}
+
+/** Whoever was told that the bench is being made safe must hear that there was nothing to do. */
+function beforeItWasOpen(reason: unknown): unknown {
+  return reason instanceof StoppedByOperator
+    ? new StoppedByOperator(reason.message, {
+        advice: 'This run switched nothing on, and has no record: the bench was not open yet.',
+        cause: reason,
+      })
+    : reason;
 }

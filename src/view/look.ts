@@ -132,6 +132,7 @@ ol,ul{margin:.4rem 0;padding-left:0;list-style:none;max-width:44rem}
 .sign .outline{fill:none;stroke:currentColor;stroke-width:4;stroke-linejoin:round}
 .sign .mark{fill:none;stroke:currentColor;stroke-width:5;stroke-linecap:round;stroke-linejoin:round}
 .safety{font-weight:600}
+.unsafe p{margin:.2rem 0}
 .safety.unsafe{padding:.6rem .8rem;border:3px solid var(--bad);color:var(--bad);font-size:1.15rem;font-weight:700}
 .folder{font-family:ui-monospace,"DejaVu Sans Mono","Liberation Mono",monospace;font-size:.92rem;color:var(--ink)}
 footer{margin-top:3rem;padding-block:1rem 2.5rem;color:var(--soft);font-size:.9rem;border-top:1px solid var(--rule)}

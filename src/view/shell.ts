@@ -84,7 +84,7 @@ export const shell = `<!doctype html>
 </main>
 <footer>
 <p id="about-stop"><strong>Stop</strong>, or Esc pressed twice within a second, has the runner switch the load off and read it back, without asking again. It is not an emergency stop: where there is danger, cut the power by hand.</p>
-<p>This page only shows, answers and stops; everything else is done at the terminal that it was opened from.</p>
+<p id="about-page">This page only shows, answers and stops; everything else is done at the terminal that it was opened from.</p>
 </footer>
 </body>
 </html>

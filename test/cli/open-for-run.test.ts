@@ -49,6 +49,10 @@ it.each(['while it keeps its first answer back', 'before it is reached at all'])
       await once(server, 'connection');
       setTimeout(hurry, 100);
     }
-    expect(await outcome).toBe(first.signal.reason);
+    expect(await outcome).toMatchObject({
+      message: 'stopped with Ctrl-C',
+      advice: expect.stringContaining('switched nothing on') as string,
+      cause: first.signal.reason as unknown,
+    });
   },
 );

@@ -1,5 +1,7 @@
-import { mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import type { ChildProcess } from 'node:child_process';
+import { once } from 'node:events';
+import { type AddressInfo, createServer, type Socket } from 'node:net';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { performance } from 'node:perf_hooks';
@@ -108,6 +110,66 @@ describe('whoever asks twice for an end does not wait for an answer that does no
       expect(stderr).toContain('It could not be confirmed that the load is off');
       expect(stderr.trimEnd().split('\n').at(-1)).toMatch(/^THE LOAD MAY STILL BE ON\. /);
       expect(status).toBe(3);
+    },
+  );
+});
+
+/** An instrument that takes every message and says nothing for longer than anybody waits. */
+async function lateAtTheDoor(): Promise<{ readonly address: string; heard(): string }> {
+  let heard = '';
+  const sockets = new Set<Socket>();
+  const server = createServer((socket) => {
+    sockets.add(socket);
+    socket.on('error', () => socket.destroy());
+    socket.on('data', (bytes) => {
+      heard += bytes.toString();
+    });
+  }).listen(0, '127.0.0.1');
+  await once(server, 'listening');
+  onTestFinished(() => {
+    server.close();
+    for (const socket of sockets) socket.destroy();
+  });
+  return { address: `tcp://127.0.0.1:${(server.address() as AddressInfo).port}`, heard: () => heard };
+}
+
+describe('whoever asks twice while the bench is still being opened', () => {
+  it.each(['load', 'meter'] as const)(
+    'does not wait for a %s that keeps its name back; nothing was switched on, and no record is begun',
+    async (late) => {
+      count += 1;
+      const served = await serve('fixtures/benches/nursery.yaml', join(folder, `late-${count}.yaml`), 'tcp');
+      onTestFinished(() => served.close());
+      const { address, heard } = await lateAtTheDoor();
+      const text = readFileSync(served.bench, 'utf8')
+        .replace(new RegExp(`(${late}:.*)tcp://127\\.0\\.0\\.1:\\d+`), `$1${address}`)
+        .replace(/driver: (\S+),/g, (_, name: string) => `driver: ${patient(name, 'meter')},`);
+      const bench = join(folder, `bench-${count}.yaml`);
+      writeFileSync(bench, text);
+      const runs = join(folder, `runs-${count}`);
+      const child = start([
+        ...['run', brisk, '--bench', bench, '--module', 'fixtures/modules/K1.yaml', '--runs', runs, '--yes'],
+      ]);
+      onTestFinished(() => void child.kill('SIGKILL'));
+      const talk = listen(child);
+      const end = ended(child);
+      await until(() => heard().includes('*IDN?'));
+      child.kill('SIGINT');
+      await until(() => talk().includes('making the bench safe'));
+      await new Promise((resolve) => setTimeout(resolve, 150));
+      const asked = performance.now();
+      child.kill('SIGINT');
+      const { status, stdout, stderr } = await end;
+      expect((performance.now() - asked) / 1000).toBeLessThan(3);
+      expect(status).toBe(3);
+      expect(stderr).toContain('not waiting any longer');
+      expect(stderr.trimEnd().split('\n').at(-1)).toMatch(
+        /^stopped with Ctrl-C\. This run switched nothing on,/,
+      );
+      expect(stdout).toBe('');
+      expect(existsSync(runs)).toBe(false);
+      expect(heard()).not.toMatch(/INP(UT)? (ON|1)/i);
+      if (late === 'meter') expect(await askLoad(served.bench)).toBe('0');
     },
   );
 });

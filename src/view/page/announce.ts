@@ -8,8 +8,8 @@ export const alarm = speaking(place('alarm'));
 export const tell = speaking(place('status'));
 
 /**
- * What comes together is said together, none instead of another. The same words a second time are no change unless
- * something stood between.
+ * What comes together is said together, none instead of another; lines are run together, as nobody hears where one
+ * ends. The same words a second time are no change unless something stood between.
  */
 function speaking(region: HTMLElement): (text: string) => void {
   let texts: readonly string[] = [];
@@ -17,7 +17,7 @@ function speaking(region: HTMLElement): (text: string) => void {
     if (texts.length === 0) {
       region.textContent = '';
       setTimeout(() => {
-        region.textContent = printable(texts.join(' '));
+        region.textContent = printable(texts.join(' ').replaceAll('\n', ' '));
         texts = [];
       }, 50);
     }

@@ -33,8 +33,10 @@ const lay: (left: ViewedLeft | ViewedEnd | undefined) => void = whenChanged((lef
   write(place('ending-heading'), heading);
   place('ending-text').replaceChildren(...words(left));
   const unsafe = left.safety.filter(({ confirmed }) => !confirmed);
-  if (unsafe.length > 0) alarm(unsafe.map(({ text }) => text).join(' '));
-  else {
+  if (unsafe.length > 0) {
+    alarm(unsafe.map(({ text }) => text).join(' '));
+    tell('The run is over.');
+  } else {
     const safe = left.safety.map(({ text }) => text);
     const over = how === 'completed' && !isWorkedOut(left) ? heading : `The run is over: ${heading}`;
     tell([`${over}.`, ...safe, ...(isWorkedOut(left) ? [] : [busyWords])].join(' '));
@@ -47,7 +49,7 @@ function words(left: ViewedLeft | ViewedEnd): readonly HTMLElement[] {
   const unsafe = safety.filter(({ confirmed }) => !confirmed);
   const safe = safety.filter(({ confirmed }) => confirmed);
   return [
-    ...unsafe.map(({ text }) => made('p', { class: 'safety unsafe' }, text)),
+    ...unsafe.map(({ text }) => made('div', { class: 'safety unsafe' }, ...paragraphs(text))),
     ...(unsafe.length > 0 && how !== 'completed'
       ? [
           made(
@@ -58,10 +60,14 @@ function words(left: ViewedLeft | ViewedEnd): readonly HTMLElement[] {
         ]
       : []),
     ...safe.map(({ text }) => made('p', { class: 'safety' }, text)),
-    ...(isWorkedOut(left) ? left.answer : []).map((line) => made('p', {}, line)),
+    ...(isWorkedOut(left) ? left.answer : []).flatMap(paragraphs),
     ...(isWorkedOut(left) && left.report !== null ? [kept('Report', left.report)] : []),
     ...(record === '' ? [] : [kept('Record', record)]),
   ];
+}
+
+function paragraphs(text: string): readonly HTMLElement[] {
+  return text.split('\n').map((line) => made('p', {}, line));
 }
 
 /** A page of the run's own may not reach for files: where it is stands as text. */

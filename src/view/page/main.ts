@@ -1,4 +1,5 @@
 import { applied, leftBy, type ViewMessage, type ViewState } from '../view-state.js';
+import { showAbout } from './about.js';
 import { type Connection, follow, now } from './connection.js';
 import { showCurve } from './curve.js';
 import { place, write } from './dom.js';
@@ -42,6 +43,7 @@ function shown(): void {
   showRun(state);
   showEnding(leftBy(state), line);
   showStop(state, line);
+  showAbout(state, line);
   showQuestion(state);
   showFigures(state, readAt === undefined ? undefined : now() - readAt, line);
   showCurve(state);

@@ -34,7 +34,6 @@ export function showStop(state: ViewState, line: Line): void {
   over = leftBy(state) !== undefined;
   if (over && document.activeElement === button) place('ending-heading').focus();
   show(button, !over);
-  show(place('about-stop'), !over);
   // Of a runner that is not heard nobody knows whether it heard: the button may be pressed again.
   if (line.kind === 'lost') asked = false;
   if (line.kind === 'live' && state.stopping) asked = true;

@@ -107,10 +107,12 @@ export function loadWords(state: ViewState | undefined, line: Line): string {
   return line.kind === 'lost' ? `Load last read ${input}` : `Load ${input}`;
 }
 
-/** `1 min 5 s gone, about 2 min to go`. */
+/** `1 min 5 s gone, about 2 min to go`; and in the end how long it took. */
 export function timesWords(state: ViewState): string {
-  const gone = `${spokenTime(state.elapsed)} gone`;
-  return leftBy(state) === undefined ? `${gone}, about ${spokenTime(state.remaining)} to go` : gone;
+  const gone = spokenTime(state.elapsed);
+  return leftBy(state) === undefined
+    ? `${gone} gone, about ${spokenTime(state.remaining)} to go`
+    : `The run took ${gone}.`;
 }
 
 export type StepStanding = 'done' | 'now' | 'to-come' | 'broken-off' | 'not-done';

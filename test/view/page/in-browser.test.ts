@@ -498,7 +498,7 @@ describe('at the end', () => {
   const unsafe = {
     what: 'load',
     confirmed: false,
-    text: 'Whether the load is off could not be read back: cut the power.',
+    text: 'It could not be confirmed that the load is off: it does not answer\nTHE LOAD MAY STILL BE ON. Unplug the module.',
   } as const;
   const ends: readonly [string, Partial<ViewedEnd>][] = [
     ['Conforms', {}],
@@ -519,11 +519,17 @@ describe('at the end', () => {
       await page.locator('#ending').waitFor();
       expect(await page.locator('#ending-heading').innerText()).toBe(heading);
       const words = await page.locator('#ending-text').innerText();
-      for (const { text } of end.safety ?? completed.safety) expect(words.indexOf(text)).toBe(0);
+      const safety = (end.safety ?? completed.safety).flatMap(({ text }) => text.split('\n'));
+      expect(words.split(/\n+/).slice(0, safety.length)).toEqual(safety);
       expect(words).toContain('Load it continuously with up to 3.18 A.');
       expect(words).toMatch(/Report: runs\/\S+-quick-look\/report\.html\s+Record: runs\/\S+-quick-look$/);
       expect(await page.locator('#line').innerText()).toBe('the run is over');
-      await heardOf(page, end.safety === undefined ? '#status' : '#alarm');
+      const aloud = end.safety === undefined ? '#status' : '#alarm';
+      await heardOf(page, aloud);
+      expect(await page.locator(aloud).innerText()).toContain(safety.join(' '));
+      expect(await page.locator('footer').innerText()).toMatch(
+        /^The run is over: this page can’t be loaded again/,
+      );
       if (end.how === undefined) await nobodyShutOut(page);
       expect(await page.locator('#lost').isHidden()).toBe(true);
       expect(complaints).toEqual([]);

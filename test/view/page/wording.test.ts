@@ -127,7 +127,7 @@ describe('the steps', () => {
 
   it('say what has gone and about what remains', () => {
     expect(timesWords({ ...before, elapsed: 65, remaining: 26 })).toBe('1 min 5 s gone, about 26 s to go');
-    expect(timesWords({ ...before, elapsed: 65, ended })).toBe('1 min 5 s gone');
+    expect(timesWords({ ...before, elapsed: 65, ended })).toBe('The run took 1 min 5 s.');
   });
 });
 
@@ -143,7 +143,7 @@ describe('while the record is worked out', () => {
     expect(titleWords(atWork, busy)).toBe('The run is over · K1');
     expect(stepWords(atWork)).toBe('All 2 steps are done.');
     expect(standingOf(2, atWork)).toBe('done');
-    expect(timesWords({ ...atWork, elapsed: 65 })).toBe('1 min 5 s gone');
+    expect(timesWords({ ...atWork, elapsed: 65 })).toBe('The run took 1 min 5 s.');
   });
 
   it('the load is what was read back at the end, and the bench comes first where that could not be', () => {
