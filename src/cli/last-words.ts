@@ -1,4 +1,5 @@
 import { write } from 'node:fs';
+import { isatty } from 'node:tty';
 import { printable } from '../report/printable.js';
 
 /** How long a terminal may take to show them. */
@@ -9,11 +10,15 @@ const patience = 1000;
  * a load off. So nothing waits for them but the very end, and that not for long.
  */
 export class LastWords {
+  readonly #clears = isatty(2) && process.env['TERM'] !== 'dumb';
   #unsaid: Promise<unknown> = Promise.resolve();
 
-  /** On a line of its own: the cursor may be left in the middle of one. */
+  /**
+   * On a line of its own: the cursor may be left in the middle of one, or on the first of a run that is shown no
+   * more, whose lines are cleared.
+   */
   say(text: string): void {
-    const bytes = Buffer.from(`\n${printable(text)}\n`);
+    const bytes = Buffer.from(`${this.#clears ? '\u001b[J' : ''}\n${printable(text)}\n`);
     const said = new Promise<void>((resolve) => {
       write(2, bytes, () => {
         resolve();

@@ -85,6 +85,29 @@ describe.skipIf(withoutSocat)('a run at a terminal', () => {
   );
 
   it(
+    'stays one block where somebody types and presses Enter meanwhile, of which nothing is left',
+    async () => {
+      const terminal = await live('typed', 80, 24);
+      await acknowledged(terminal);
+      await until(() => / {2}\d\.\d{3} A {2,}\d/.test(terminal.shown()));
+      const before = terminal.shown().length;
+      terminal.type('scrap\r\r\r');
+      const sinceTyped = (): string => terminal.shown().slice(before);
+      await until(() => /scrap(?:\r\n){3}/.test(sinceTyped()));
+      const echoed = terminal.shown().length;
+      await until(() => terminal.shown().slice(echoed).split(' gone, about ').length > 2);
+      const screen = onScreen(terminal.shown(), 80, 24);
+      expect(times(screen, /^K1 · /)).toBe(1);
+      expect(times(screen, /^ +set to +voltage/)).toBe(1);
+      expect(times(screen, /scrap/)).toBe(0);
+      terminal.type('\x03');
+      await terminal.closed;
+      expect(times(onScreen(terminal.shown(), 80, 24), /^ +set to +voltage|scrap|gone, about/)).toBe(0);
+    },
+    patience,
+  );
+
+  it(
     'asks in words that are whole in 40 columns, and a question that is stopped leaves none behind',
     async () => {
       const terminal = await live('narrow', 40, 20);

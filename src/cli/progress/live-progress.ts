@@ -1,12 +1,10 @@
-import { clearLine, cursorTo, moveCursor } from 'node:readline';
-import { stripVTControlCharacters } from 'node:util';
-import { createLogUpdate } from 'log-update';
 import { realClock } from '../../clock/real-clock.js';
 import { printable } from '../../quantity/printable.js';
 import type { Seconds } from '../../quantity/quantity.js';
 import { fitted } from '../../quantity/word-wrap.js';
 import { styleFor } from '../../report/style.js';
 import { showsUnicode } from '../../report/unicode-terminal.js';
+import { Block } from './block.js';
 import { frame } from './frame.js';
 import type { RunProgress } from './run-progress.js';
 import type { RunSoFar } from './run-so-far.js';
@@ -28,42 +26,17 @@ export function liveProgress(
   const look = { unicode: showsUnicode(environment), style: styleFor(stream, environment) };
   const before = Object.getOwnPropertyDescriptor(stream, 'write');
   const write = stream.write.bind(stream);
-  const own = {
-    isTTY: true,
-    get columns() {
-      return stream.columns;
-    },
-    get rows() {
-      return stream.rows;
-    },
-    write,
-  } as unknown as NodeJS.WriteStream;
-  // A cursor that was hidden would stay so where the program is killed.
-  const block = createLogUpdate(own, { showCursor: true });
-  let drawn: readonly string[] = [];
+  const block = new Block(write);
   let drawnAt = -Infinity;
   let isLineOpen = false;
   let isSuspended = false;
   let pending: NodeJS.Timeout | undefined;
   let notice: string | undefined;
 
-  const takeAway = (): void => {
-    if (drawn.length === 0) return;
-    // A terminal that became narrower has broken the lines: they stand on more rows than were drawn.
-    const rows = drawn.reduce((sum, line) => sum + rowsOf(line, stream.columns), 0);
-    for (let extra = rows - drawn.length; extra > 0; extra -= 1) {
-      clearLine(own, 0);
-      moveCursor(own, 0, -1);
-    }
-    cursorTo(own, 0);
-    block.clear();
-    drawn = [];
-  };
   const draw = (): void => {
     if (isLineOpen || isSuspended) return;
     drawnAt = realClock.now();
-    drawn = frame(run, notice, { columns: stream.columns, rows: stream.rows, ...look });
-    block(drawn.join('\n'));
+    block.draw(frame(run, notice, { columns: stream.columns, rows: stream.rows, ...look }));
   };
   const soon = (): void => {
     const wait = redrawEvery - (realClock.now() - drawnAt);
@@ -76,18 +49,18 @@ export function liveProgress(
   };
 
   stream.write = (chunk: string | Uint8Array, ...rest: never[]): boolean => {
-    takeAway();
+    block.takeAway();
     const text = typeof chunk === 'string' ? chunk : Buffer.from(chunk).toString('latin1');
     if (text !== '') isLineOpen = !text.endsWith('\n');
     return write(chunk, ...rest);
   };
 
   const resized = (): void => {
-    takeAway();
+    block.takeAwayResized();
     draw();
   };
   const suspended = (): void => {
-    takeAway();
+    block.takeAway();
     // Once it goes on, what was due meanwhile comes before it hears of it.
     isSuspended = true;
     process.off('SIGTSTP', suspended);
@@ -98,8 +71,7 @@ export function liveProgress(
     isSuspended = false;
     process.off('SIGTSTP', suspended).on('SIGTSTP', suspended);
     // Whatever was drawn before is not ours to take away: others have written below it.
-    block.done();
-    drawn = [];
+    block.forget();
     draw();
   };
   const timer = setInterval(soon, tick * 1000).unref();
@@ -118,7 +90,7 @@ export function liveProgress(
       soon();
     },
     end() {
-      takeAway();
+      block.takeAway();
       clearInterval(timer);
       clearTimeout(pending);
       stream.off('resize', resized);
@@ -127,10 +99,4 @@ export function liveProgress(
       else Object.defineProperty(stream, 'write', before);
     },
   };
-}
-
-/** How many rows of a terminal so wide a line of ours takes. */
-function rowsOf(line: string, columns: number): number {
-  const { length } = Array.from(stripVTControlCharacters(line));
-  return Math.max(1, Math.ceil(length / Math.max(1, columns)));
 }
