@@ -70,7 +70,7 @@ export function valueInWords(finding: Comparable): string {
 
 /**
  * `+18.2 ± 0.3 mΩ (+101 %)` for quantities, `from bonded to isolated` for words; empty for what is alone. Of
- * a least value only that can be told what it has certainly moved by: `at least -0.99 A`.
+ * a least value only that can be told what it has certainly moved by: `-0.99 A or further`.
  */
 export function changeInWords({ before, after, difference }: Compared): string {
   if (difference !== undefined && before?.bound === undefined && after?.bound === undefined)
@@ -78,7 +78,7 @@ export function changeInWords({ before, after, difference }: Compared): string {
   if (difference !== undefined) {
     const isCertain =
       before?.bound === undefined ? difference.value > 0 : after?.bound === undefined && difference.value < 0;
-    return isCertain ? `at least ${differenceInWords({ ...difference, expanded: null, share: null })}` : '';
+    return isCertain ? `${differenceInWords({ ...difference, expanded: null, share: null })} or further` : '';
   }
   if (before === undefined || after === undefined) return '';
   const [was, is] = [valueInWords(before), valueInWords(after)];

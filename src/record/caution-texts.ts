@@ -9,7 +9,7 @@ export const cautionTexts = {
   'floating-outputs':
     'Outputs in a stack float at the sum of the voltages below them. Above 60 V DC they are no longer touch-safe.',
   'earth-link-removed':
-    'A change of this module has to do with earth. Without its earth link an output has lost the protection against a fault from primary to secondary. Use a residual-current device; local codes and a licensed person decide whether it may be used so.',
+    'A change that was made has to do with earth. Without its earth link an output has lost the protection against a fault from primary to secondary. Use a residual-current device; local codes and a licensed person decide whether it may be used so.',
 } as const;
 
 /** Undefined for a name that only another version knows. */

@@ -1,7 +1,9 @@
 import { type Finding, findingNamed } from '../analysis/finding.js';
 import { compareWithBaseline } from '../judgement/compare.js';
 import { capitalised } from '../quantity/capitalised.js';
+import { listed } from '../quantity/listed.js';
 import { roundedDown } from '../quantity/rounded-down.js';
+import { earthWasWorkedOn } from '../record/earth-changes.js';
 import { changesInWords } from './changes.js';
 import { inOneLine } from './finding-text.js';
 import { groupAnswer } from './group-answer.js';
@@ -94,10 +96,17 @@ function verdict({ decisions, outcome }: Result): readonly string[] {
   return [`It does not conform: ${[...new Set(names)].join(', ')}.`];
 }
 
-/** A measurement can't say that a module whose earth was worked on may be used. */
-function whoDecides({ header, findings }: Result): readonly string[] {
-  if (!header.procedure.cautions.includes('earth-link-removed') || findings.length === 0) return [];
-  return [
-    'Its earth was worked on: whether it may be used so is for local codes and a licensed person to decide.',
-  ];
+/** A measurement can't say that a module whose earth was worked on may be used; of several it is said of which. */
+function whoDecides({ header: { circuit, modules, procedure }, findings }: Result): readonly string[] {
+  if (!procedure.cautions.includes('earth-link-removed') || findings.length === 0) return [];
+  const whose = modules.filter(earthWasWorkedOn);
+  // A procedure may say so of modules whose files do not.
+  const names = (whose.length === 0 ? modules : whose).map(({ name }) => printable(name));
+  const [what, they] =
+    circuit === 'single'
+      ? ['Its earth was worked on', 'it']
+      : names.length === 1
+        ? [`The earth of ${listed(names)} was worked on`, 'it']
+        : [`The earths of ${listed(names)} were worked on`, 'they'];
+  return [`${what}: whether ${they} may be used so is for local codes and a licensed person to decide.`];
 }

@@ -32,9 +32,14 @@ export function changesInWords({ findings, inNeither, sameModules }: Comparison)
   return [
     ...wrong,
     ...became,
-    ...(open.length === 0 ? [] : [`It can't be told of ${listed(open)}.`]),
+    ...(open.length === 0 ? [] : [openInWords(open)]),
     ...(kept === 0 ? [] : [rest(kept, wrong.length + became.length + open.length, sameModules)]),
   ];
+}
+
+function openInWords(open: readonly string[]): string {
+  const are = open.length === 1 ? 'is as it' : 'are as they';
+  return `Whether ${listed(open)} ${are} should be can't be told.`;
 }
 
 function isMeantChange({ outcome, expected }: Compared): boolean {

@@ -1,5 +1,6 @@
 import { named } from '../steps/isolation-prompts.js';
 import { cautionTexts } from '../record/caution-texts.js';
+import { earthWasWorkedOn } from '../record/earth-changes.js';
 import type { TakenOver } from './taken-over.js';
 import type { UnderTest } from '../steps/under-test.js';
 import type { Module } from '../files/module.js';
@@ -50,7 +51,3 @@ const concerns: Readonly<Record<CautionName, (module: Module) => boolean>> = {
   'floating-outputs': all,
   'earth-link-removed': earthWasWorkedOn,
 };
-
-function earthWasWorkedOn({ changes }: Module): boolean {
-  return changes.some(({ what }) => /\bearth/i.test(what));
-}

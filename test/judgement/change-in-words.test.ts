@@ -47,8 +47,8 @@ describe('the change of a least value', () => {
 
   it('is told as far as it is certain', () => {
     const least = { ...droopOf(0.018), bound };
-    expect(changeInWords(compared(droopOf(0.01), least))).toBe('at least +8 mΩ');
-    expect(changeInWords(compared(least, droopOf(0.01)))).toBe('at least -8 mΩ');
+    expect(changeInWords(compared(droopOf(0.01), least))).toBe('+8 mΩ or further');
+    expect(changeInWords(compared(least, droopOf(0.01)))).toBe('-8 mΩ or further');
   });
 
   it('is not told where it may as well be none', () => {

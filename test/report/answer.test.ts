@@ -162,7 +162,28 @@ describe('the answer', () => {
     const procedure = { ...result.header.procedure, cautions: ['earth-link-removed'] };
     const findings = [inWords('earth-relation', 'isolated', { step: 1 })];
     const sentences = answer({ ...result, header: { ...result.header, procedure }, findings, decisions: [] });
-    expect(sentences.at(-1)).toMatch(/for local codes and a licensed person to decide\.$/);
+    expect(sentences.at(-1)).toBe(
+      'Its earth was worked on: whether it may be used so is for local codes and a licensed person to decide.',
+    );
+  });
+
+  it.each([
+    [['K2'], 'The earth of K2 was worked on: whether it may be used so is for'],
+    [['K1', 'K2'], 'The earths of K1 and K2 were worked on: whether they may be used so is for'],
+  ])('says of a group on whose earth something was done: %s', (worked, sentence) => {
+    const { header, ...result } = resultOf();
+    const changed = (name: string, what: string) => ({
+      ...(header.modules[0] as (typeof header.modules)[number]),
+      name,
+      changes: [{ date: '2026-11-14', what }],
+    });
+    const modules = ['K1', 'K2', 'K3'].map((name) =>
+      changed(name, worked.includes(name) ? 'link from output to earth removed' : 'fan replaced'),
+    );
+    const procedure = { ...header.procedure, cautions: ['earth-link-removed'] };
+    const findings = [inWords('hogging-module', 'none', { step: 1 })];
+    const group = { ...header, modules, procedure, circuit: 'parallel' as const };
+    expect(answer({ ...result, header: group, findings, decisions: [] }).join(' ')).toContain(sentence);
   });
 
   it('says what flows into a short circuit and how warm the module gets', () => {

@@ -38,7 +38,7 @@ describe('what changed, in words', () => {
 
   it('names what can not be told, also what nobody looked at', () => {
     expect(changes([droopOf(0.018, 0.002)], [droopOf(0.018, 0.002)])).toEqual([
-      "It can't be told of droop-resistance and earth-relation.",
+      "Whether droop-resistance and earth-relation are as they should be can't be told.",
     ]);
   });
 

@@ -33,7 +33,7 @@ export function changesSection(records: ComparedRecords): Markup | undefined {
   return section(
     'One by one',
     table(
-      'Words that are others than before, or could not be told.',
+      `Words that ${sameModules ? 'are others than before' : 'differ'}, or could not be told.`,
       [
         { heading: 'Finding', as: 'name' },
         { heading: 'Earlier' },

@@ -47,7 +47,7 @@ function plates(then: RunHeader, now: RunHeader): readonly string[] {
   return of(then) === of(now)
     ? []
     : [
-        `The nameplates differ: ${named(then)}, then ${named(now)}. What is given in % of them is of different wholes.`,
+        `The nameplates differ. Earlier: ${named(then)}. Later: ${named(now)}. What is given in % of them is of different wholes.`,
       ];
 }
 
@@ -82,7 +82,7 @@ function benches({ bench: then }: RunHeader, { bench: now }: RunHeader): readonl
     ...(then.simulated === now.simulated
       ? []
       : ['One of the two was made on a simulated bench: it says nothing of a real module.']),
-    ...(then.name === now.name ? [] : [`The benches differ: ${then.name}, then ${now.name}.`]),
+    ...(then.name === now.name ? [] : [`The benches differ. Earlier: ${then.name}. Later: ${now.name}.`]),
     ...voltageRead(then, now),
     ...(JSON.stringify(then.leads) === JSON.stringify(now.leads) ? [] : ['The leads differ.']),
     ...(JSON.stringify(then.places) === JSON.stringify(now.places) ? [] : ['The ballasts differ.']),

@@ -61,9 +61,11 @@ const escapes: Readonly<Record<string, string>> = {
   "'": '&#39;',
 };
 
-/** A number and its unit stay on one line. */
+/** A number and its unit stay on one line, and an uncertainty with its sign. */
 function unbroken(text: string): string {
-  return text.replace(/(\d) (?=(?:[µmkM]?[VAWΩ]|%|°C|K|min|h|s)(?![\p{L}\d]))/gu, '$1\u00a0');
+  return text
+    .replace(/± (?=\d)/g, '±\u00a0')
+    .replace(/(\d) (?=(?:[µmkM]?[VAWΩ]|%|°C|K|min|h|s)(?![\p{L}\d]))/gu, '$1\u00a0');
 }
 
 /** In text and between double quotes alike (HTML Living Standard, 13.3); what steers or hides itself is shown. */

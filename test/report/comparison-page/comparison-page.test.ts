@@ -159,7 +159,7 @@ describe('what two records are compared by', () => {
 
   it.each([
     ['the procedures', 'The procedures differ: real-limit, then acceptance.'],
-    ['the benches', 'The benches differ: nursery bench, then corner bench.'],
+    ['the benches', 'The benches differ. Earlier: nursery bench. Later: corner bench.'],
     ['a simulated bench', 'One of the two was made on a simulated bench'],
     ['the instruments', 'the load and meter are others in the later record.'],
     [
@@ -191,7 +191,7 @@ describe('what two records are compared by', () => {
     const after = { ...fourTwins.after, header: { ...fourTwins.after.header, modules } };
     const text = page({ ...fourTwins, after });
     expect(text).toContain('<strong>W3: 2026-11-14: fan of number 3 replaced</strong>');
-    expect(text).toContain('then W1 15 V, 4 A; W2 15 V, 5 A; W3 15 V, 6 A; W4 15 V, 7 A.');
+    expect(text).toContain('Later: W1 15 V, 4 A; W2 15 V, 5 A; W3 15 V, 6 A; W4 15 V, 7 A.');
   });
 
   it('has all in bold that its caption says, which leaves out name and time', () => {
