@@ -14,7 +14,7 @@ export class LastWords {
   #unsaid: Promise<unknown> = Promise.resolve();
 
   /**
-   * On a line of its own: the cursor may be left in the middle of one, or on the first of a run that is shown no
+   * On a line of its own: the cursor may be left in the middle of one, or above the block of a run that is shown no
    * more, whose lines are cleared.
    */
   say(text: string): void {

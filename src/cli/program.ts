@@ -7,7 +7,7 @@ import type { CompareOptions } from './compare.js';
 import type { DriversOptions } from './drivers.js';
 import { errorText } from './error-text.js';
 import { exitStatusList } from './exit-status-words.js';
-import { helpItem } from './help-item.js';
+import { helpExample, helpItem, helpUsage } from './help-item.js';
 import { packageFacts, troubleshootingPage } from './package-facts.js';
 import type { ReportOptions } from './report.js';
 import type { RunOptions } from './run-wanted.js';
@@ -47,14 +47,17 @@ function commands(streams: Streams, done: (status: ExitCode) => void): Command {
     })
     .showHelpAfterError('(railproof help <command> shows examples)')
     .addHelpText('after', firstSteps)
-    .configureHelp({ formatItem: helpItem })
+    .configureHelp({
+      formatItem: helpItem,
+      commandUsage: (called) => helpUsage(called, streams.stdout.columns || 80),
+    })
     .addHelpText('after', () => exitStatusList(Math.min(streams.stdout.columns || 80, 80)));
 
   const command = (usage: string, description: string, example: string): Command =>
     program
       .command(usage)
       .description(description)
-      .addHelpText('after', `\nExample:\n  ${example}\n`)
+      .addHelpText('after', () => helpExample(example, streams.stdout.columns))
       .showHelpAfterError(`(railproof help ${usage.replace(/ .*/, '')} shows an example)`);
   const json = (): Option => new Option('--json', 'print one JSON object instead of text');
   const junit = (): Option =>

@@ -1,7 +1,9 @@
+import { execFileSync } from 'node:child_process';
 import { mkdtempSync, readFileSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
+import { helpExample } from '../../src/cli/help-item.js';
 import { ended, railproof, start } from '../whole/railproof.js';
 
 const folder = mkdtempSync(join(tmpdir(), 'railproof-help-'));
@@ -71,6 +73,18 @@ describe('help', () => {
     expect(example.at(-2)).toBe('--to');
     expect(stdout).toBe(`Report: ${to}\n`);
     expect(status).toBe(0);
+  });
+
+  it('shows an example on a narrow terminal in lines no wider, which a shell takes for the same command', () => {
+    const words = ['select', 'fixtures/runs', '--group', '2', '--supplies', '2', '--sheet', 'sheet.html'];
+    const shown = helpExample(`railproof ${words.join(' ')}`, 40);
+    for (const line of shown.split('\n')) expect(line.length).toBeLessThanOrEqual(40);
+    const pasted = shown.replace('\nExample:\n', '').replace('railproof', `printf '%s\\n'`);
+    expect(pasted.trim().split('\n').length).toBeGreaterThan(1);
+    expect(execFileSync('sh', ['-c', pasted], { encoding: 'utf8' }).trim().split('\n')).toEqual(words);
+    expect(helpExample(`railproof ${words.join(' ')}`, undefined)).toContain(
+      `  railproof ${words.join(' ')}\n`,
+    );
   });
 
   it('of new shows an example that asks for somebody who answers', async () => {

@@ -7,8 +7,8 @@ const clearRest = '\u001b[K';
  * Lines that are redrawn where they stand, in sequences that every terminal knows (ECMA-48, and the two older ones by
  * which the cursor is kept and taken back).
  *
- * The cursor rests on the first of them and not below the last: whatever is typed meanwhile is echoed from there, and
- * what Enter moves down stays among the lines, where the window need not scroll. So the place is found again without
+ * The cursor rests on an empty line above them and not below the last: whatever is typed meanwhile is echoed there,
+ * and what Enter moves down stays among the lines, where the window need not scroll. So the place is found again without
  * a change to the terminal's modes, which would stay where the program is killed; and a window that is resized breaks
  * lines below the cursor only.
  */
@@ -20,11 +20,11 @@ export class Block {
     this.#write = write;
   }
 
-  /** Instead of what was drawn before; else from the line on which the cursor stands, which is to be empty. */
+  /** Instead of what was drawn before; else below the line on which the cursor stands, which is to be empty. */
   draw(lines: readonly string[]): void {
-    const up = lines.length > 1 ? `\u001b[${lines.length - 1}A` : '';
-    const drawn = lines.join(`${clearRest}\n`);
-    this.#write(`${this.#isDrawn ? `${restore}\r` : ''}${drawn}${clearBelow}\r${up}${save}`);
+    const start = this.#isDrawn ? `${restore}\r` : '';
+    const drawn = lines.map((line) => `${clearRest}\n${line}`).join('');
+    this.#write(`${start}${drawn}${clearBelow}\r\u001b[${lines.length}A${save}`);
     this.#isDrawn = true;
   }
 
