@@ -60,7 +60,7 @@ export const shell = `<!doctype html>
 <h2 id="curve-heading">Curve</h2>
 <figure>
 <div class="plot" id="plot" role="img" aria-labelledby="curve-heading" aria-describedby="curve-words"></div>
-<figcaption><p class="legend" id="legend"></p><p id="curve-words">No points yet.</p></figcaption>
+<figcaption><p class="legend" id="legend"></p><p id="curve-words">No points so far.</p></figcaption>
 </figure>
 <details id="last-points" hidden><summary>The last points as a table</summary>
 <div class="wide" id="points" role="region" aria-label="The last points" tabindex="0"></div>

@@ -30,7 +30,7 @@ writeFileSync(
 function patient(name: string, silent: 'load' | 'meter'): string {
   const path = join(folder, `${name}-${count}.yaml`);
   const shipped = readFileSync(`drivers/${name}.yaml`, 'utf8');
-  writeFileSync(path, shipped.replace('timeout: 1 s', silent === 'load' ? 'timeout: 2 s' : 'timeout: 20 s'));
+  writeFileSync(path, shipped.replace(/timeout: \d s/, silent === 'load' ? 'timeout: 2 s' : 'timeout: 20 s'));
   return path;
 }
 
@@ -115,7 +115,7 @@ describe('whoever asks twice for an end does not wait for an answer that does no
 });
 
 /** An instrument that takes every message and says nothing for longer than anybody waits. */
-async function lateAtTheDoor(): Promise<{ readonly address: string; heard(): string }> {
+async function lateAtTheDoor(): Promise<{ readonly address: string; heard: () => string }> {
   let heard = '';
   const sockets = new Set<Socket>();
   const server = createServer((socket) => {
@@ -140,9 +140,9 @@ describe('whoever asks twice while the bench is still being opened', () => {
       count += 1;
       const served = await serve('fixtures/benches/nursery.yaml', join(folder, `late-${count}.yaml`), 'tcp');
       onTestFinished(() => served.close());
-      const { address, heard } = await lateAtTheDoor();
+      const door = await lateAtTheDoor();
       const text = readFileSync(served.bench, 'utf8')
-        .replace(new RegExp(`(${late}:.*)tcp://127\\.0\\.0\\.1:\\d+`), `$1${address}`)
+        .replace(new RegExp(`(${late}:.*)tcp://127\\.0\\.0\\.1:\\d+`), `$1${door.address}`)
         .replace(/driver: (\S+),/g, (_, name: string) => `driver: ${patient(name, 'meter')},`);
       const bench = join(folder, `bench-${count}.yaml`);
       writeFileSync(bench, text);
@@ -153,7 +153,7 @@ describe('whoever asks twice while the bench is still being opened', () => {
       onTestFinished(() => void child.kill('SIGKILL'));
       const talk = listen(child);
       const end = ended(child);
-      await until(() => heard().includes('*IDN?'));
+      await until(() => door.heard().includes('*IDN?'));
       child.kill('SIGINT');
       await until(() => talk().includes('making the bench safe'));
       await new Promise((resolve) => setTimeout(resolve, 150));
@@ -168,7 +168,7 @@ describe('whoever asks twice while the bench is still being opened', () => {
       );
       expect(stdout).toBe('');
       expect(existsSync(runs)).toBe(false);
-      expect(heard()).not.toMatch(/INP(UT)? (ON|1)/i);
+      expect(door.heard()).not.toMatch(/INP(UT)? (ON|1)/i);
       if (late === 'meter') expect(await askLoad(served.bench)).toBe('0');
     },
   );

@@ -168,7 +168,7 @@ export function chartWords(points: readonly ViewedPoint[], run: Pick<ViewedRun, 
   const chart = chartOf(points, run);
   const last = points.at(-1);
   if (chart === undefined || last === undefined)
-    return points.length === 0 ? 'No points yet.' : 'Nothing of this step is drawn.';
+    return points.length === 0 ? 'No points so far.' : 'Nothing of this step is drawn.';
   const { marks } = chart;
   const dropped = marks.filter(({ look }) => look === 'dropped').length;
   const count = marks.length === 1 ? '1 point' : `${marks.length} points`;

@@ -48,7 +48,7 @@ function shown(): void {
   showFigures(state, readAt === undefined ? undefined : now() - readAt, line);
   showCurve(state);
   showSteps(state);
-  showCautions(state.cautions);
+  showCautions(state);
   showNotices(state.notices);
 }
 

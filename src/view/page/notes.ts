@@ -1,21 +1,32 @@
 import { clockTime } from '../../quantity/spoken-time.js';
-import type { ViewedCaution, ViewedNotice, ViewState } from '../view-state.js';
+import { leftBy, type ViewedCaution, type ViewedNotice, type ViewState } from '../view-state.js';
 import { made, place, show, whenChanged } from './dom.js';
 import { cautionWords } from './wording.js';
 
-export const showCautions: (cautions: ViewState['cautions']) => void = whenChanged((cautions) => {
-  show(place('cautions-section'), cautions.length > 0);
-  place('cautions').replaceChildren(...cautions.map(caution));
-});
+export function showCautions(state: ViewState): void {
+  if (leftBy(state) === undefined) cautionsAsked(state.cautions);
+  else cautionsLeft(state.cautions);
+}
 
-function caution({ name, text, by }: ViewedCaution): HTMLElement {
+const cautionsAsked = cautionsShown('Waits to be acknowledged.');
+const cautionsLeft = cautionsShown('Was not acknowledged.');
+
+/** @param open what is said of one that nobody acknowledged. */
+function cautionsShown(open: string): (cautions: ViewState['cautions']) => void {
+  return whenChanged((cautions) => {
+    show(place('cautions-section'), cautions.length > 0);
+    place('cautions').replaceChildren(...cautions.map((each) => caution(each, open)));
+  });
+}
+
+function caution({ name, text, by }: ViewedCaution, open: string): HTMLElement {
   const lines = text.split('\n');
   return made(
     'li',
     {},
     made('strong', {}, name.charAt(0).toUpperCase() + name.slice(1).replaceAll('-', ' ')),
     ...(lines.length > 1 ? [made('ol', {}, ...lines.map((line) => made('li', {}, line)))] : lines),
-    made('span', { class: by === undefined ? 'by waits' : 'by' }, cautionWords({ by })),
+    made('span', { class: by === undefined ? 'by waits' : 'by' }, by === undefined ? open : cautionWords(by)),
   );
 }
 

@@ -1,4 +1,4 @@
-import type { ViewState } from '../view-state.js';
+import { leftBy, type ViewState } from '../view-state.js';
 
 /** One of the large figures, as it stands on the page. */
 export interface FigureShown {
@@ -26,8 +26,12 @@ export function fixed(value: number, decimals: number): string {
 }
 
 /** The four large figures. Power is what voltage and current make together. */
-export function figuresShown({ run, figures }: Pick<ViewState, 'run' | 'figures'>): readonly FigureShown[] {
+export function figuresShown(
+  state: Pick<ViewState, 'run' | 'figures' | 'workingOut' | 'ended'>,
+): readonly FigureShown[] {
+  const { run, figures } = state;
   const { voltage, current, temperature, setCurrent } = figures;
+  const unread = leftBy(state) === undefined ? 'not read yet' : 'not read';
   const nothing = voltage === undefined && current === undefined && temperature === undefined;
   const shown = (
     value: number | null | undefined,
@@ -35,7 +39,7 @@ export function figuresShown({ run, figures }: Pick<ViewState, 'run' | 'figures'
     absent: string,
   ): FigureShown['value'] => {
     if (value === null) return { kind: 'none', words: 'no reading' };
-    if (value === undefined) return { kind: 'none', words: nothing ? 'not read yet' : absent };
+    if (value === undefined) return { kind: 'none', words: nothing ? unread : absent };
     return { kind: 'number', text: fixed(value, decimals) };
   };
   const { volts, amperes, watts } = decimalsOf(run.rated);

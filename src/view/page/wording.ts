@@ -103,7 +103,7 @@ export function loadLeft(state: ViewState | undefined): 'on' | 'off' | 'unsure' 
 export function loadWords(state: ViewState | undefined, line: Line): string {
   const input = loadLeft(state);
   if (input === 'unsure') return 'Load may still be on';
-  if (input === undefined) return 'Load not read yet';
+  if (input === undefined) return state && leftBy(state) ? 'Load not read' : 'Load not read yet';
   return line.kind === 'lost' ? `Load last read ${input}` : `Load ${input}`;
 }
 
@@ -154,10 +154,9 @@ function endedIn(step: number, count: number): string {
   return step === 0 ? `Ended before the first of ${count} steps.` : `Ended in step ${step} of ${count}.`;
 }
 
-export function cautionWords({ by }: Pick<ViewedCaution, 'by'>): string {
+/** Of one that was acknowledged. */
+export function cautionWords(by: NonNullable<ViewedCaution['by']>): string {
   switch (by) {
-    case undefined:
-      return 'Waits to be acknowledged.';
     case 'operator':
       return 'Acknowledged by the person at the bench.';
     case '--yes':

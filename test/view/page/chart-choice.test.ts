@@ -88,7 +88,7 @@ describe('what is drawn', () => {
 
 describe('the chart in words', () => {
   it('says how many points there are, how many fell, and the last', () => {
-    expect(chartWords([], run)).toBe('No points yet.');
+    expect(chartWords([], run)).toBe('No points so far.');
     expect(chartWords([point(0.4)], run)).toBe(
       'Voltage against current: 1 point. The last: 0.400 A, 15.193 V, held.',
     );

@@ -22,7 +22,7 @@ import {
   type Window,
 } from './browser.js';
 import { aBusyRunner } from '../busy-runner.js';
-import { before, point } from './viewed.js';
+import { before, neverBegun, point } from './viewed.js';
 
 vi.setConfig({ testTimeout: patience, hookTimeout: patience });
 
@@ -226,7 +226,7 @@ describe('what others wrote', () => {
 describe('the curve', () => {
   it('grows with its points, in ink of the light that there is, with words and a table beside it', async () => {
     const { view, page } = await viewed({ step: 2, input: 'on' });
-    expect(await page.locator('#curve-words').innerText()).toBe('No points yet.');
+    expect(await page.locator('#curve-words').innerText()).toBe('No points so far.');
     expect(await inked(page, 'line-0')).toBe(0);
     for (const current of [0, 1, 2, 3, 4]) view.show({ kind: 'point', point: point(current) });
     await page.locator('#curve-words', { hasText: ': 5 points' }).waitFor();
@@ -495,6 +495,17 @@ describe('a page that nobody saw for a while', () => {
 });
 
 describe('at the end', () => {
+  it('of a run that was given up before it began nothing waits any more', async () => {
+    const cautions = [{ name: 'mains', text: 'Its case stays closed.', by: undefined }];
+    const { view, page } = await viewed({ cautions });
+    expect(await page.locator('#cautions').innerText()).toContain('Waits to be acknowledged.');
+    view.show({ kind: 'ended', ended: neverBegun });
+    await page.locator('#ending-heading', { hasText: /^Stopped with Ctrl-C$/ }).waitFor();
+    expect(await page.locator('#cautions').innerText()).toContain('Was not acknowledged.');
+    expect(await page.locator('#load-word').innerText()).toBe('Load not read');
+    expect(await page.locator('body').innerText()).not.toContain('yet');
+  });
+
   const unsafe = {
     what: 'load',
     confirmed: false,

@@ -1,11 +1,11 @@
 import { describe, expect, it } from 'vitest';
 import { decimalsFor, figuresShown, fixed } from '../../../src/view/page/numbers.js';
-import type { Figures } from '../../../src/view/view-state.js';
+import type { Figures, ViewedEnd } from '../../../src/view/view-state.js';
 import fc from '../../property.js';
-import { run } from './viewed.js';
+import { before, neverBegun, run } from './viewed.js';
 
-const shown = (figures: Figures): readonly string[] =>
-  figuresShown({ run, figures }).map(({ value, unit }) =>
+const shown = (figures: Figures, ended?: ViewedEnd): readonly string[] =>
+  figuresShown({ run, figures, workingOut: undefined, ended }).map(({ value, unit }) =>
     value.kind === 'number' ? `${value.text} ${unit}` : value.words,
   );
 
@@ -21,6 +21,7 @@ describe('the large figures', () => {
 
   it('say in words that nothing was read yet, that an instrument had nothing, and that nothing measures', () => {
     expect(shown({})).toEqual(['not read yet', 'not read yet', 'not read yet', 'not read yet']);
+    expect(shown({}, neverBegun)).toEqual(['not read', 'not read', 'not read', 'not read']);
     expect(shown({ voltage: null, current: 2 })).toEqual([
       'no reading',
       '2.000 A',
@@ -31,7 +32,7 @@ describe('the large figures', () => {
   });
 
   it('say beside the current what the load is set to', () => {
-    const [, current] = figuresShown({ run, figures: { setCurrent: 2.5, current: 2.4998 } });
+    const [, current] = figuresShown({ ...before, figures: { setCurrent: 2.5, current: 2.4998 } });
     expect(current?.set).toBe('set to 2.500 A');
   });
 

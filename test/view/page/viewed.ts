@@ -1,4 +1,4 @@
-import type { ViewedPoint, ViewedRun, ViewState } from '../../../src/view/view-state.js';
+import type { ViewedEnd, ViewedPoint, ViewedRun, ViewState } from '../../../src/view/view-state.js';
 
 export const run: ViewedRun = {
   title: 'A first look',
@@ -28,6 +28,17 @@ export const before: ViewState = {
   stopping: false,
   workingOut: undefined,
   ended: undefined,
+};
+
+/** One that was given up while its bench was opened. */
+export const neverBegun: ViewedEnd = {
+  how: 'stopped',
+  reason: 'stopped with Ctrl-C',
+  answer: ['This run switched nothing on.'],
+  outcome: 'not-judged',
+  safety: [],
+  record: '',
+  report: null,
 };
 
 /** A point of a ramp at a current, with what differs from one that held. */

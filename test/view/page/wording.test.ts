@@ -16,7 +16,7 @@ import {
   titleWords,
 } from '../../../src/view/page/wording.js';
 import type { ViewedEnd, ViewedLeft } from '../../../src/view/view-state.js';
-import { before } from './viewed.js';
+import { before, neverBegun } from './viewed.js';
 
 const live = { kind: 'live' } as const;
 const lost = { kind: 'lost', seconds: 4.6, why: 'silent' } as const;
@@ -83,6 +83,7 @@ describe('the load', () => {
     expect(loadWords({ ...before, input: 'off' }, live)).toBe('Load off');
     expect(loadWords(before, live)).toBe('Load not read yet');
     expect(loadWords(undefined, live)).toBe('Load not read yet');
+    expect(loadWords({ ...before, ended: neverBegun }, over)).toBe('Load not read');
   });
 
   it('may still be on where the end could not confirm that it is off', () => {
