@@ -1,5 +1,6 @@
 import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
 import { type AnyFile, readAnyFile } from '../files/read-any-file.js';
+import { parseDriver } from '../files/read-driver.js';
 import { readStages } from '../files/read-stages.js';
 import type { FileRead } from '../files/read-text.js';
 import { printable } from '../quantity/printable.js';
@@ -45,7 +46,8 @@ async function checkTogether(file: FileRead<AnyFile>): Promise<string> {
   if (kind === 'bench') {
     const drivers = await readBenchDrivers({ ...file, value: content });
     for (const driver of new Map(drivers.map(({ file: each }) => [each.path, each])).values()) {
-      checkDialogueOf(driver);
+      // As its file has it: the bench's is that of one channel, and a dialogue may speak of any.
+      checkDialogueOf({ ...driver, value: parseDriver(driver.text, driver.path) });
     }
   }
   return '';

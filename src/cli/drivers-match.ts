@@ -69,9 +69,12 @@ function answerText(question: string, answer: string | undefined): string {
 function matchText(address: string, match: Match, answered: readonly string[], { stdout }: Streams): string {
   if (match.kind === 'silent') {
     return fitted(
-      `Nothing answers the question who it is, with any end of line. Is the instrument switched on, is remote ` +
-        `control enabled, and is the baud rate right (serial:path?baud=9600)? One that must be put in remote ` +
-        `before it answers is not found in this way: try load-remote-scpi.\n`,
+      match.repeats
+        ? 'Nothing answers the question who it is: what is sent comes back, and no more. Does the cable join what ' +
+            'is sent to what is received, or is the interface the wrong one?\n'
+        : `Nothing answers the question who it is, with any end of line. Is the instrument switched on, is remote ` +
+            `control enabled, and is the baud rate right (serial:path?baud=9600)? One that must be put in remote ` +
+            `before it answers is not found in this way: try load-remote-scpi.\n`,
       stdout.columns,
     );
   }

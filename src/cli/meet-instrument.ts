@@ -2,16 +2,13 @@ import { realClock } from '../clock/real-clock.js';
 import { RailproofError } from '../errors/railproof-error.js';
 import type { ConnectionAddress } from '../files/bench.js';
 import type { Driver } from '../files/driver.js';
-import { type FamilyMatch, matchDrivers } from '../instrument/match.js';
+import { type Match, matchDrivers } from '../instrument/match.js';
 import { connectors } from './connectors.js';
 import { anyOf } from './drivers-match.js';
 import { errorText } from './error-text.js';
 
 /** What became of asking at an address who is there. */
-export type Met =
-  | { readonly kind: 'answered'; readonly identity: string; readonly families: readonly FamilyMatch[] }
-  | { readonly kind: 'silent' }
-  | { readonly kind: 'unreachable'; readonly reason: string };
+export type Met = Match | { readonly kind: 'unreachable'; readonly reason: string };
 
 /**
  * Asks the instrument at an address who it is, and what each family of drivers would ask that does no harm: nothing is
@@ -30,7 +27,7 @@ export async function meetInstrument(
       signal.throwIfAborted();
       const match = await matchDrivers({ drivers, connection, clock: realClock, signal });
       signal.throwIfAborted();
-      return match.kind === 'silent' ? match : { ...match, kind: 'answered' };
+      return match;
     } finally {
       signal.removeEventListener('abort', hangUp);
       await connection.close();

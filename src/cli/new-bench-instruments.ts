@@ -6,11 +6,10 @@ import type { NewBench, NewInstrument } from '../files/new-bench.js';
 import { readDriver } from '../files/read-driver.js';
 import { shippedNames } from '../files/shipped-file.js';
 import { listPorts } from '../instrument/ports.js';
-import { visible } from '../instrument/visible.js';
 import { printable } from '../quantity/printable.js';
 import { readBy } from './answer-readers.js';
-import { meetInstrument, type Met } from './meet-instrument.js';
-import { troubleshootingPage } from './package-facts.js';
+import { meetInstrument } from './meet-instrument.js';
+import { makesNoSense, remarkOn, sayLacking, sayMet, wireLacking } from './new-bench-met.js';
 import { type Option, type Questions, UnfitAnswerError } from './questions.js';
 import { shipped } from './wiring.js';
 
@@ -135,58 +134,21 @@ async function askInstrument(
           : 'Proposed is what it answers like.',
     },
     [...free, leaveOut],
-    met.kind === 'answered' && fits === undefined ? undefined : (fits ?? leaveOut).word,
+    met.kind === 'answered' && !makesNoSense(met) && fits === undefined ? undefined : (fits ?? leaveOut).word,
   );
   if (part === undefined) return undefined;
   const best = families.find(({ role }) => role === part)?.driver;
   const chosenDriver = await askDriver(questions, part, { best, known, shelf });
+  const lacking = wireLacking(met, chosenDriver.driver);
+  if (lacking !== undefined)
+    sayLacking(questions, lacking, { name: chosenDriver.name, role: part, connection: address });
   const channel = await askChannel(questions, chosenDriver.driver);
+  const more = lacking === undefined ? '' : ` Its driver must say ${lacking}.`;
   const place: NewInstrument = {
-    ...{ driver: chosenDriver.name, connection: address, remark: remarkOn(met) },
+    ...{ driver: chosenDriver.name, connection: address, remark: remarkOn(met) + more },
     ...(channel === undefined ? {} : { channel }),
   };
   return { part, place, driver: chosenDriver.driver };
-}
-
-function sayMet(questions: Questions, met: Met): void {
-  switch (met.kind) {
-    case 'answered': {
-      const [best] = met.families;
-      questions.say(`It says that it is ${visible(met.identity)}.`);
-      questions.say(
-        best === undefined
-          ? 'No shipped driver fits: none of what they ask was answered. Take the one whose words are nearest (drivers/README.md), and mend a copy of it afterwards.'
-          : `${best.driver} fits best: ${best.understood.length} of ${best.asked.length} of its questions were understood.`,
-      );
-      if (best?.role === 'scanner')
-        questions.say(
-          'A scanner goes with a group section, which is written by hand: procedures/README.md has one. Leave it out here.',
-        );
-      return;
-    }
-    case 'silent':
-      questions.say(
-        'Nothing answers. Is it switched on, is remote control enabled, and, at a serial port, is the baud rate right ' +
-          '(?baud=115200)? Leave it out and give its address again to ask once more; or say what it is, and pick a ' +
-          `driver by hand. ${troubleshootingPage()} has more under "It does not answer".`,
-      );
-      return;
-    case 'unreachable':
-      questions.say(met.reason);
-      questions.say(
-        'Leave it out and give its address again to ask once more; or say what it is, and pick a driver by hand.',
-      );
-  }
-}
-
-function remarkOn(met: Met): string {
-  switch (met.kind) {
-    case 'answered':
-      return `It said that it is ${visible(met.identity)}.`;
-    case 'silent':
-    case 'unreachable':
-      return 'It did not answer when this file was made; the driver was picked by hand.';
-  }
 }
 
 function askDriver(

@@ -33,7 +33,11 @@ export interface FamilyMatch {
 }
 
 export type Match =
-  | { readonly kind: 'silent' }
+  | {
+      readonly kind: 'silent';
+      /** What it was sent came back, and nothing else. */
+      readonly repeats: boolean;
+    }
   | {
       readonly kind: 'answered';
       readonly identity: string;
@@ -64,7 +68,7 @@ const patience: Readonly<Record<'state' | 'measured', Seconds>> = { state: 0.5, 
  */
 export async function matchDrivers(parts: MatchParts): Promise<Match> {
   const met = await meet(parts);
-  if (met === undefined) return { kind: 'silent' };
+  if ('repeats' in met) return { kind: 'silent', ...met };
   const asked = await askAll(parts, met);
   const families = parts.drivers
     .map((driver) => familyMatch(driver, met.identity, asked.answers))
@@ -86,7 +90,12 @@ interface Met {
 }
 
 /** Every question for the identity that a family has, with every end of line. */
-async function meet({ drivers, connection, clock }: MatchParts): Promise<Met | undefined> {
+async function meet({
+  drivers,
+  connection,
+  clock,
+}: MatchParts): Promise<Met | { readonly repeats: boolean }> {
+  let repeats = false;
   const questions = [...new Set(drivers.map(({ identify }) => identify))];
   for (const sendEnd of sendEnds) {
     for (const identify of questions) {
@@ -97,9 +106,10 @@ async function meet({ drivers, connection, clock }: MatchParts): Promise<Met | u
       await connection.write(Buffer.from(identify + sendEnd, 'latin1'));
       const words = firstWords(await hear(connection, firstPatience), identify);
       if (words.reply !== undefined) return { identity: words.reply.trim(), words, sendEnd, identify };
+      repeats ||= words.echo;
     }
   }
-  return undefined;
+  return { repeats };
 }
 
 async function hear(connection: Connection, within: Seconds): Promise<string> {

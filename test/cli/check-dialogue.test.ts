@@ -39,3 +39,19 @@ it('an answer that does not come out is named with its line, and what it came ou
     expect(status).toBe(65);
   }
 });
+
+it.each([1, 2, 4])(
+  'a bench is right with channel %i of a driver whose dialogue speaks of several channels',
+  async (channel) => {
+    const { bench } = withDialogue('{ reading: voltage, answer: "15.21", is: 15.21 V }');
+    const text = readFileSync(bench, 'utf8');
+    writeFileSync(
+      bench,
+      text.replace('driver: ./driver.yaml', `driver: load-channel-scpi, channel: ${channel}`),
+    );
+    const { status, stdout, stderr } = await railproof('check', bench);
+    expect(stderr).toBe('');
+    expect(stdout).toContain('bench.yaml: a bench file, and right\n');
+    expect(status).toBe(0);
+  },
+);

@@ -94,6 +94,18 @@ describe('drivers --match', () => {
   );
 
   it(
+    'says of a line that only sends back what it is sent that nobody is there',
+    async () => {
+      const instrument = quirkyInstrument({ echo: '\n' }, () => undefined, realClock);
+      const address = formatAddress(await serveQuirkyTcp(instrument));
+      const { status, stdout } = await railproof('drivers', '--match', address);
+      expect(stdout).toContain('what is sent comes back, and no more. Does the cable join');
+      expect(status).toBe(69);
+    },
+    patience,
+  );
+
+  it(
     'says of one that hangs up in the middle that its connection is lost',
     async () => {
       const { address } = await loadAtSocket((message) => (message === 'FUNC?' ? 'hang-up' : undefined));

@@ -67,7 +67,7 @@ describe('finding the family of an instrument', () => {
 
   it('says that nothing answers, after each end of line', async () => {
     const { match, sent } = await matched({});
-    expect(match).toEqual({ kind: 'silent' });
+    expect(match).toEqual({ kind: 'silent', repeats: false });
     expect(sent.filter((message) => message === '*IDN?')).toHaveLength(3);
   });
 });
