@@ -15,3 +15,8 @@ export function facts(each: readonly (Fact | undefined)[]): Markup {
 export function code(text: string): Markup {
   return element('span', { class: 'code' }, text);
 }
+
+/** A checksum as a whole: on a narrow screen two lines of the same length, and in one piece when it is copied. */
+export function hash(text: string): Markup {
+  return element('span', { class: 'code hash' }, text);
+}

@@ -59,6 +59,17 @@ const series = dashes.map(
   (dash, index) => `.s${index}{--c:var(--line-${index})}.s${index} .line{stroke-dasharray:${dash}}`,
 );
 
+/**
+ * Seen only at an edge beyond which something is hidden: the paper, which moves with what is read, covers a shade that
+ * stays where it is.
+ */
+const shadeWhereMoreIs = [
+  'linear-gradient(to right,var(--paper) 1rem,transparent) left/2.2rem 100% no-repeat local',
+  'linear-gradient(to left,var(--paper) 1rem,transparent) right/2.2rem 100% no-repeat local',
+  'linear-gradient(to right,var(--rule),transparent) left/.9rem 100% no-repeat scroll',
+  'linear-gradient(to left,var(--rule),transparent) right/.9rem 100% no-repeat scroll',
+].join();
+
 export const css = `
 :root{color-scheme:light dark;${variables(light)}}
 @media (prefers-color-scheme:dark){:root{${variables(dark)}}}
@@ -107,19 +118,16 @@ section{margin-top:2.6rem}
 .figures .big{font:600 1.25rem/1.3 Charter,"Bitstream Charter","Sitka Text",Cambria,"Noto Serif","Liberation Serif",serif;
  font-variant-numeric:tabular-nums}
 .code{font:.86em/1.5 ui-monospace,"Noto Sans Mono","Liberation Mono",monospace;overflow-wrap:anywhere}
+.hash{display:inline-block;max-width:64ch;word-break:break-all}
+.why{display:block}
 .one{break-inside:avoid;margin-top:1.7rem}
 .one h3{display:flex;flex-wrap:wrap;gap:.1rem 1rem;justify-content:space-between;margin:0;padding-bottom:.25rem;
  border-bottom:1px solid var(--rule)}
-.one table{table-layout:fixed}
-.one th{width:17%}
-.one thead th:first-child{width:43%}
-.one thead th:nth-child(2){width:8%}
-.one thead th:nth-child(4){width:12%}
 .one caption{position:absolute;width:1px;height:1px;overflow:hidden;clip-path:inset(50%)}
 .sign{display:grid;grid-template-columns:5fr 5fr 3fr;gap:.7rem 1.4rem;margin:.8rem 0 0;break-inside:avoid}
 .sign dt{color:var(--soft);font-size:.85rem}
 .sign dd{margin:0;height:2rem;border-bottom:1px solid var(--ink)}
-.wide{overflow-x:auto;margin:.9rem 0;overflow-wrap:normal}
+.wide{overflow-x:auto;margin:.9rem 0;overflow-wrap:normal;background:${shadeWhereMoreIs}}
 table{border-collapse:collapse;width:100%;font-size:.94rem;line-height:1.4;font-variant-numeric:tabular-nums}
 caption{text-align:left;padding-bottom:.35rem;font-size:.9rem}
 th,td{padding:.38rem .9rem .38rem 0;text-align:left;vertical-align:top;border-bottom:1px solid var(--rule)}
@@ -169,10 +177,27 @@ ${series.join('\n')}
 .diagram .solid{fill:var(--ink)}
 .diagram .terminal{fill:var(--paper);stroke:var(--ink);stroke-width:1.6}
 .diagram .value{fill:var(--soft)}
+@media (min-width:30.01rem){
+.one table{table-layout:fixed}
+.one th{width:17%}
+.one thead th:first-child{width:43%}
+.one thead th:nth-child(2){width:8%}
+.one thead th:nth-child(4){width:12%}
+}
+@media (max-width:32rem){
+.wide:has(>.chart)::before{content:"Wider than this screen: it scrolls sideways.";display:block;position:sticky;left:0;
+ width:max-content;max-width:100%;margin-bottom:.3rem;color:var(--soft);font-size:.85rem}
+}
 @media (max-width:30rem){
 h1{font-size:1.6rem}
 .facts{grid-template-columns:1fr;gap:0}
-.one table{table-layout:auto;font-size:.88rem}
+.one table,.one thead,.one tbody{display:block;font-size:.88rem}
+.one tr{display:grid;grid-template-columns:2.4rem repeat(3,1fr);gap:.1rem .5rem;padding-block:.35rem;
+ border-bottom:1px solid var(--rule)}
+.one thead tr{border-bottom:1.5px solid var(--ink)}
+.one th,.one td{padding:0;border:0}
+.one tr>:first-child{grid-column:1/-1}
+.hash{max-width:32ch}
 .sign{grid-template-columns:1fr}
 .facts dd{margin-bottom:.45rem}
 .standing{grid-template-columns:2.2rem 1fr;gap:0 .8rem;padding:1rem}
@@ -185,30 +210,46 @@ h1{font-size:1.6rem}
 .notes td::before{content:attr(data-head);color:var(--soft)}
 .notes td>*{grid-column:2}
 .notes td:empty{display:none}
+.notes td:has(>.code){grid-template-columns:1fr;gap:0}
+.notes td>.code{grid-column:1}
 }
-@page{size:A4;margin:16mm 15mm 18mm}
+@page{size:A4;margin:15mm 15mm 16mm}
 @media print{
 :root{color-scheme:light;${variables(light)};--paper:#fff}
 html{font-size:9.5pt}
-.sign dd{height:.85cm}
+.sign{gap:.35rem 1.4rem;margin-top:.4rem}
+.sign dd{height:.75cm}
 td .code{font-size:.74em}
 section:has(.sign){break-inside:avoid}
-body{line-height:1.4}
+body{line-height:1.35}
 p,ul,ol,figcaption{max-width:none}
 header,main,footer{max-width:none;padding-inline:0}
 header{padding-top:0}
-section{margin-top:1.2rem}
-.standing{margin-top:1rem;padding:.8rem 1rem}
-figure,.wide{margin-block:.7rem}
-th,td{padding-block:.22rem}
+.facts{gap:.1rem 1.2rem;margin-top:.5rem}
+.facts dt,.facts dd{line-height:1.35}
+.standing{grid-template-columns:2.4rem 1fr;margin-top:.7rem;padding:.5rem .8rem}
+.standing svg{width:2.4rem;height:2.4rem}
+.standing p,.standing ul,.standing li{margin-block:.12rem}
+.standing .word{font-size:1.2rem}
+.lead{font-size:1.1rem}
+.figures{display:flex;gap:1.2rem;margin-block:.7rem 0}
+.figures div{flex:1 1 auto;min-width:8.5rem}
+.figures .big{font-size:1.1rem;white-space:nowrap}
+.why{display:inline}
+.why::before{content:" · "}
+section{margin-top:.9rem}
+h2{margin-bottom:.35rem}
+section>p:not(:last-child){break-inside:avoid;break-after:avoid}
+figure,.wide{margin-block:.5rem}
+th,td{padding-block:.2rem}
 footer{margin-top:.6rem;padding-block:.3rem 0;break-before:avoid}
 tr,li,figure,.standing,.facts{break-inside:avoid}
 tbody tr:first-child:not(:last-child){break-after:avoid}
 tbody tr:last-child:not(:first-child){break-before:avoid}
 thead{display:table-header-group;break-after:avoid}
 caption{break-after:avoid}
-h1{font-size:17pt}h2{font-size:13pt}h3{font-size:11pt}
-.wide{overflow:visible}
+h1{font-size:16pt;margin-block:.1rem .2rem}h2{font-size:13pt}h3{font-size:11pt}
+.wide{overflow:visible;background:none}
 .chart{width:100%;max-width:13.5cm;min-width:0}
 .diagram{max-height:10.5cm;width:auto}
 .skip{display:none}

@@ -49,5 +49,10 @@ function decided({ outcome, probability, note }: Decision): Markup {
   const probably =
     probability === null ? [] : [`probability of conformity ${probabilityInWords(probability)}`];
   const why = [...probably, ...(note === '' ? [] : [note])];
-  return element('span', {}, verdict(outcome), why.length > 0 && [element('br', {}), why.join('; ')]);
+  return element(
+    'span',
+    {},
+    verdict(outcome),
+    why.length > 0 && element('span', { class: 'why' }, why.join('; ')),
+  );
 }

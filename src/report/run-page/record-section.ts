@@ -6,7 +6,7 @@ import { table } from '../page/table.js';
 import { journalInWords } from '../record-words.js';
 import type { Result } from '../result.js';
 import { counted } from './in-words.js';
-import { code, facts } from '../page/facts.js';
+import { code, facts, hash } from '../page/facts.js';
 
 /** By what it can be told later that the record is still the one that this page is of. */
 export function recordSection({ run, header, evidence, integrity, fingerprints }: Result): Markup {
@@ -14,24 +14,28 @@ export function recordSection({ run, header, evidence, integrity, fingerprints }
     'The record',
     facts([
       ['Folder', code(run)],
-      ['Journal', `${capitalised(journalInWords(integrity))}${sizeInWords(integrity)}`],
+      ['Seals', `${capitalised(journalInWords(integrity))}${sizeInWords(integrity)}`],
       integrity.kind === 'damaged' ? ['Damage', `line ${integrity.line}: ${integrity.problem}`] : undefined,
       ['Readings', counted(evidence.readings, 'reading')],
-      ['Last seal', fingerprints.lastSeal === undefined ? 'none' : code(fingerprints.lastSeal)],
-      ['run.json', code(fingerprints.header)],
+      ['Last seal', fingerprints.lastSeal === undefined ? 'none' : hash(fingerprints.lastSeal)],
+      ['run.json', hash(fingerprints.header)],
     ]),
     element(
       'p',
       { class: 'soft' },
       'A seal is the SHA-256 of all lines before it, so a torn, reordered or edited journal shows; the first line seals ' +
-        'run.json. No key is in it: whoever signs below vouches for the last seal. ',
+        'run.json. No key is in it: whoever signs this report vouches for the last seal. ',
       code('railproof analyse --strict'),
       ' works all of this out again from the record, or says what is not whole.',
     ),
     table(
       'What the run was made from, as it was then; the texts themselves stand in run.json.',
-      [{ heading: 'File', as: 'name' }, { heading: 'Path', as: 'text' }, { heading: 'SHA-256' }],
-      header.files.map(({ kind, path, sha256 }) => [kind, code(path), code(sha256)]),
+      [
+        { heading: 'File', as: 'name' },
+        { heading: 'Path', as: 'text' },
+        { heading: 'SHA-256', as: 'long' },
+      ],
+      header.files.map(({ kind, path, sha256 }) => [kind, code(path), hash(sha256)]),
     ),
   );
 }
