@@ -8,6 +8,7 @@ import { pageMark } from '../../../src/report/page/page.js';
 import { headerOf } from '../../analysis/evidence-of.js';
 import { readChart } from '../chart/read-chart.js';
 import { compared, fourTwins, header, limitMoved, moduleWith, nothingMoved } from './made-comparisons.js';
+import { readRows } from './read-rows.js';
 
 const made = { program: 'railproof test', date: new Date('2026-12-02T17:00:00Z') };
 
@@ -22,23 +23,6 @@ function movedIn({ comparison: { findings } }: ComparedRecords): readonly string
 /** What each arrow of a page says that it marks. */
 function arrowsOf(text: string): readonly string[] {
   return [...text.matchAll(/<g class="shift"><title>([^<]*)/g)].map(([, says = '']) => says);
-}
-
-/** A chart of rows read back: the value of each by the numbers at the ticks below, in the unit of the axis. */
-function rowsOf(text: string, id: string) {
-  const from = text.lastIndexOf('<svg', text.indexOf(`id="${id}-title"`));
-  const svg = text.slice(from, text.indexOf('</svg>', from));
-  const ticks = [...svg.matchAll(/class="tick" x="([^"]+)"[^>]*>([^<]+)/g)].map(([, x, value = '']) => ({
-    x: Number(x),
-    value: Number(value.replace('−', '-')),
-  }));
-  const [first, last] = [ticks[0], ticks.at(-1)];
-  if (first === undefined || last === undefined || first === last) throw new Error('an axis without ticks');
-  const slope = (last.value - first.value) / (last.x - first.x);
-  const at = (x: string | undefined): number => first.value + slope * (Number(x) - first.x);
-  return [...svg.matchAll(/class="shape" data-of="([^"]+)" d="M(\S+) /g)]
-    .map(([, shape = '', x]) => ({ shape, value: at(x) }))
-    .slice(0, [...svg.matchAll(/class="name"/g)].length);
 }
 
 describe('the page of a comparison', () => {
@@ -77,7 +61,7 @@ describe('the page of a comparison', () => {
     const text = page(limitMoved);
     const charts = limitMoved.comparison.findings
       .filter((one) => movementOf(one) === 'moved')
-      .map((one, index) => ({ one, rows: rowsOf(text, `change-${index + 1}`) }));
+      .map((one, index) => ({ one, rows: readRows(text, `change-${index + 1}`).rows }));
     expect(charts.length).toBeGreaterThan(2);
     const scales: Readonly<Record<string, number>> = { resistance: 1e3, ratio: 100 };
     for (const { one, rows } of charts) {
@@ -94,7 +78,7 @@ describe('the page of a comparison', () => {
   });
 
   it('draws each difference as a share of what is allowed', () => {
-    const rows = rowsOf(page(fourTwins), 'allowance');
+    const { rows } = readRows(page(fourTwins), 'allowance');
     // 1.5, 1.5, -5 and 2 percentage points of 3 that are allowed.
     expect(rows.map(({ value }) => Math.round(value))).toEqual(
       [50, 50, -167, 67].map((share) => expect.closeTo(share, -0.5) as number),
@@ -124,6 +108,20 @@ describe('the curves of two records laid over each other', () => {
     });
     expect(slopes[0]).toBeCloseTo(0.018, 2);
     expect(slopes[1]).toBeCloseTo(0.024, 2);
+  });
+
+  it('have about each line a band to both sides', () => {
+    const figure = curvesFigure(limitMoved);
+    if (figure === undefined) throw new Error('no curves');
+    const { lines, bands } = readChart(figure);
+    expect(bands).toHaveLength(2);
+    for (const [index, line] of [...lines.values()].entries()) {
+      for (const [x, y] of [line[0] ?? [NaN, NaN], line.at(-1) ?? [NaN, NaN]]) {
+        const there = (bands[index] ?? []).filter(([at]) => Math.abs(at - x) < 0.01).map(([, each]) => each);
+        expect(Math.max(...there)).toBeGreaterThan(y);
+        expect(Math.min(...there)).toBeLessThan(y);
+      }
+    }
   });
 
   it('are subtracted from each other, and the slope of that is the change of the droop', () => {

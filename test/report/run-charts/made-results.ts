@@ -56,8 +56,9 @@ export const bent: Step = {
   ),
 };
 
-export function soaked(given: SoakGiven, header: RunHeader = thermometerHeader()): Result {
-  return resultOf([...soak(1, 0, given), ended()], header);
+/** @param from when the run came to its soak. */
+export function soaked(given: SoakGiven, header: RunHeader = thermometerHeader(), from = 0): Result {
+  return resultOf([...soak(1, from, given), ended()], header);
 }
 
 function ended(): TimedEvent {
