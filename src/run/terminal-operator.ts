@@ -86,15 +86,8 @@ export class TerminalOperator implements Operator {
     const { input, output } = this.#terminal;
     if (input.readableEnded || input.destroyed) throw new TerminalClosed();
     signal.throwIfAborted();
-    const lines = this.#fitted(text).split('\n');
-    const prompt = lines.pop() ?? '';
-    if (lines.length > 0) output.write(`${lines.join('\n')}\n`);
-    return this.#answer(prompt, signal);
-  }
-
-  async #answer(prompt: string, signal: AbortSignal): Promise<string> {
-    const { input, output } = this.#terminal;
     const closed = new AbortController();
+    // Before the question is seen: what is pressed as soon as it is must come as a key already.
     const lines = createInterface({ input, output });
     lines.once('close', () => {
       closed.abort(new TerminalClosed());
@@ -106,6 +99,9 @@ export class TerminalOperator implements Operator {
     lines.on('SIGINT', () => {
       this.#terminal.interrupted();
     });
+    const above = this.#fitted(text).split('\n');
+    const prompt = above.pop() ?? '';
+    if (above.length > 0) output.write(`${above.join('\n')}\n`);
     try {
       return await lines.question(prompt, { signal: AbortSignal.any([signal, closed.signal]) });
     } catch (error) {

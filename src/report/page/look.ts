@@ -210,8 +210,8 @@ h1{font-size:1.6rem}
 .notes td::before{content:attr(data-head);color:var(--soft)}
 .notes td>*{grid-column:2}
 .notes td:empty{display:none}
-.notes td:has(>.code){grid-template-columns:1fr;gap:0}
-.notes td>.code{grid-column:1}
+.notes td:has(>.hash){grid-template-columns:1fr;gap:0}
+.notes td>.hash{grid-column:1}
 }
 @page{size:A4;margin:15mm 15mm 16mm}
 @media print{
