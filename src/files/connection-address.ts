@@ -4,10 +4,10 @@ import type { ConnectionAddress, SerialSettings } from './bench.js';
 import { namePattern } from './name-pattern.js';
 import { didYouMean } from '../quantity/nearest.js';
 
-/** A text that names no way to an instrument. */
+/** A text that names no way to an instrument; in a file, what is wrong with the file. */
 export class AddressError extends RailproofError {
   readonly code = 'ADDRESS';
-  readonly exitCode = exitCodes.badFile;
+  readonly exitCode = exitCodes.usage;
   readonly address: string;
 
   constructor(message: string, address: string) {

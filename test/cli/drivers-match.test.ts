@@ -62,6 +62,16 @@ async function served(speaks: Quirks, knows: Knows, over: string) {
 }
 
 describe('drivers --match', () => {
+  it.each([
+    ['--match', 'nonsense'],
+    ['--try', 'load-input-scpi', '--connection', 'nonsense'],
+  ])('says that an address which is none is a wrong word in the command: drivers %s %s', async (...words) => {
+    const { status, stdout, stderr } = await railproof('drivers', ...words);
+    expect(status).toBe(64);
+    expect(stdout).toBe('');
+    expect(stderr).toContain('Ways to connect: tcp://127.0.0.1:5025');
+  });
+
   it(
     'needs one connection only, of one that serves no other',
     async () => {
