@@ -5,12 +5,12 @@ import { wordWrap } from '../quantity/word-wrap.js';
 export const exitStatusWords: Readonly<Record<keyof typeof exitCodes, string>> = {
   conforms: 'conforms, or nothing to judge, or may be built',
   doesNotConform:
-    'does not conform, or changed, or must not be built, or is recommended for less than the load asked for',
+    'does not conform, or changed, or must not be built, or is recommended for less than the load asked for, or no driver fits',
   undecided: 'undecided, or nobody can tell',
   stopped: 'stopped by a guard or by the operator',
   usage: 'usage',
   badFile: 'bad file',
-  missingFile: 'missing file',
+  missingFile: 'missing file, or one that may not be read',
   instrument: 'instrument unreachable or lost, or the load not confirmed to be off',
   bug: 'a fault of ours',
   inputOutput: 'the record or the output could not be written',
