@@ -223,6 +223,9 @@ describe('a run that was killed', () => {
       expect(resumed.status).toBe(0);
       expect(readdirSync(into)).toHaveLength(2);
       expect(fingerprint(record)).toBe(before);
+      const later = readdirSync(into).find((name) => name !== basename(record)) ?? '';
+      const both = await ended(start(['compare', record, join(into, later)]));
+      expect(both.stdout + both.stderr).toContain('THE SAME READINGS: step 1 of both records');
     } finally {
       await second.close();
     }

@@ -55,7 +55,10 @@ it('a least value has an arrow on to more in place of an interval, and nothing i
 
 it('of what is allowed the bars hold the difference with 95 %, to either side alike', () => {
   const records = between(dropsAt(4, 0.06), dropsAt(4.1, 0.08));
-  const [row] = readRows(String(allowanceFigure(records)), 'allowance').rows;
+  const { rows, band } = readRows(String(allowanceFigure(records)), 'allowance');
+  const [row] = rows;
+  expect(band?.from).toBeCloseTo(-100, 0);
+  expect(band?.to).toBeCloseTo(100, 0);
   // 0.1 A of 0.2 A that are allowed, and 0.06 A with 0.08 A make 0.1 A: from nothing to all of it.
   expect(row?.value).toBeCloseTo(50, 0);
   expect(row?.between?.[0]).toBeCloseTo(0, 0);
