@@ -232,8 +232,8 @@ header{padding-top:0}
 .standing p,.standing ul,.standing li{margin-block:.12rem}
 .standing .word{font-size:1.2rem}
 .lead{font-size:1.1rem}
-.figures{display:flex;gap:1.2rem;margin-block:.7rem 0}
-.figures div{flex:1 1 auto;min-width:8.5rem}
+.figures{display:flex;flex-wrap:wrap;gap:.6rem 1.2rem;margin-block:.7rem 0}
+.figures div{flex:1 1 8.5rem;min-width:min-content}
 .figures .big{font-size:1.1rem;white-space:nowrap}
 .why{display:inline}
 .why::before{content:" · "}
