@@ -1,8 +1,8 @@
-import { existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { pathToFileURL } from 'node:url';
-import { type Browser, chromium, type Page } from 'playwright-core';
+import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { RunHeader } from '../../src/record/run-header.js';
 import type { Markup } from '../../src/report/page/markup.js';
@@ -29,9 +29,9 @@ import {
   upAndBack,
 } from '../report/run-charts/made-results.js';
 import { alike, drawer, shared, stacked } from '../report/run-charts/made-groups.js';
+import { isBrowserMissing, openBrowser } from '../view/page/browser.js';
 import { textsInTheWay } from './texts-in-the-way.js';
 
-const executablePath = '/usr/bin/chromium';
 const hostile = '"><script>document.title="gone"</script><img src=x onerror=alert(1)>'.repeat(4);
 const room = { ambient: { temperature: 22, uncertainty: 0.5 } };
 const figures = [
@@ -74,15 +74,12 @@ const results: readonly (readonly [name: string, result: Result, charts: number]
   ],
 ];
 
-// Where chromium is missing nothing can be looked at; CI installs it, and there nothing is skipped.
-const isMissing = !existsSync(executablePath) && process.env['CI'] === undefined;
-
-describe.skipIf(isMissing)('the charts of a record in a browser (needs /usr/bin/chromium)', () => {
+describe.skipIf(isBrowserMissing)('the charts of a record in a browser (needs /usr/bin/chromium)', () => {
   let browser: Browser;
   const folder = mkdtempSync(join(tmpdir(), 'railproof-charts-'));
 
   beforeAll(async () => {
-    browser = await chromium.launch({ executablePath, args: ['--no-sandbox'] });
+    browser = await openBrowser();
   });
   afterAll(async () => {
     await browser.close();

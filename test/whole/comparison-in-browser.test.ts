@@ -1,4 +1,4 @@
-import { existsSync, mkdtempSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
+import { mkdtempSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import type { Browser, Page } from 'playwright-core';
@@ -21,7 +21,7 @@ import {
   nothingMoved,
 } from '../report/comparison-page/made-comparisons.js';
 import { limited, soaked } from '../report/run-charts/made-results.js';
-import { nobodyShutOut, openBrowser, patience } from '../view/page/browser.js';
+import { isBrowserMissing, nobodyShutOut, openBrowser, patience } from '../view/page/browser.js';
 import { chartsOn, cutOff, offThePaper, type OpenedPage, openFile } from './page-in-browser.js';
 import { runShipped } from './shipped-runs.js';
 import { textsInTheWay } from './texts-in-the-way.js';
@@ -63,10 +63,7 @@ const cases: readonly (readonly [
   ],
 ];
 
-// Where chromium is missing nothing can be looked at; CI installs it, and there nothing is skipped.
-const isMissing = !existsSync('/usr/bin/chromium') && process.env['CI'] === undefined;
-
-describe.skipIf(isMissing)('the page of a comparison in a browser (needs /usr/bin/chromium)', () => {
+describe.skipIf(isBrowserMissing)('the page of a comparison in a browser (needs /usr/bin/chromium)', () => {
   let browser: Browser;
   const folder = mkdtempSync(join(tmpdir(), 'railproof-comparisons-'));
 

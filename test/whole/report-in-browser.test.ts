@@ -1,4 +1,4 @@
-import { existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { pathToFileURL } from 'node:url';
@@ -8,7 +8,7 @@ import type { Result } from '../../src/report/result.js';
 import { runPage } from '../../src/report/run-page/run-page.js';
 import { eventsOf } from '../analysis/evidence-of.js';
 import { header, resultOf, steps } from '../report/fixed-record.js';
-import { nobodyShutOut, openBrowser, patience } from '../view/page/browser.js';
+import { isBrowserMissing, nobodyShutOut, openBrowser, patience } from '../view/page/browser.js';
 import { chartsOn, cutOff, offThePaper, openFile } from './page-in-browser.js';
 import { runShipped, shown } from './shipped-runs.js';
 import { textsInTheWay } from './texts-in-the-way.js';
@@ -48,10 +48,7 @@ const charts: Readonly<Record<string, readonly string[]>> = {
   stacking: ['Voltage of the whole over its current', 'Voltages in the string', 'From the measured limit'],
 };
 
-// Where chromium is missing nothing can be looked at; CI installs it, and there nothing is skipped.
-const isMissing = !existsSync('/usr/bin/chromium') && process.env['CI'] === undefined;
-
-describe.skipIf(isMissing)('the report of a run in a browser (needs /usr/bin/chromium)', () => {
+describe.skipIf(isBrowserMissing)('the report of a run in a browser (needs /usr/bin/chromium)', () => {
   let browser: Browser;
   const folder = mkdtempSync(join(tmpdir(), 'railproof-reports-'));
 

@@ -1,16 +1,15 @@
-import { existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { pathToFileURL } from 'node:url';
-import { type Browser, chromium, type Page } from 'playwright-core';
+import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { buildPage } from '../../src/report/page/build-page.js';
 import { madeParallel, madeSelection, madeSeries, madeStages } from '../report/sheet/made-builds.js';
-import { nobodyShutOut } from '../view/page/browser.js';
+import { isBrowserMissing, nobodyShutOut, openBrowser } from '../view/page/browser.js';
 import { openFile } from './page-in-browser.js';
 import { textsInTheWay } from './texts-in-the-way.js';
 
-const executablePath = '/usr/bin/chromium';
 const made = { program: 'railproof test', date: new Date('2026-12-02T03:30:00Z') };
 const many = ['K1', 'K2', 'K3', 'K4', 'K5', 'K6', 'K7', 'K8'];
 const hostile = '<script>document.title="gone"</script><img src=x onerror=alert(1)>" onload="alert(1)';
@@ -33,16 +32,12 @@ const sheets = {
 } as const;
 const rows = Object.entries(sheets).map(([name, sheet]) => [name, sheet] as const);
 
-// Where chromium is missing nothing can be looked at; CI installs it, and there nothing is skipped.
-const isMissing = !existsSync(executablePath) && process.env['CI'] === undefined;
-
-describe.skipIf(isMissing)('a build sheet in a browser (needs /usr/bin/chromium)', () => {
+describe.skipIf(isBrowserMissing)('a build sheet in a browser (needs /usr/bin/chromium)', () => {
   let browser: Browser;
   const folder = mkdtempSync(join(tmpdir(), 'railproof-sheets-'));
 
   beforeAll(async () => {
-    // Root, as CI runs, has no sandbox of its own to offer.
-    browser = await chromium.launch({ executablePath, args: ['--no-sandbox'] });
+    browser = await openBrowser();
   });
   afterAll(async () => {
     await browser.close();

@@ -5,10 +5,9 @@ import { join } from 'node:path';
 import type { Browser } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { css } from '../../../src/report/page/look.js';
-import { openBrowser } from '../../view/page/browser.js';
+import { isBrowserMissing, openBrowser } from '../../view/page/browser.js';
 
-const isMissing =
-  (!existsSync('/usr/bin/chromium') || !existsSync('/usr/bin/pdftotext')) && process.env['CI'] === undefined;
+const isMissing = isBrowserMissing || (!existsSync('/usr/bin/pdftotext') && process.env['CI'] === undefined);
 
 /** Millimetres of other matter above, so that the end of the paper falls anywhere within what is looked at. */
 const above = Array.from({ length: 12 }, (_, index) => 180 + 7 * index);

@@ -1,4 +1,4 @@
-import { readFileSync } from 'node:fs';
+import { existsSync, readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import { chromium, type Browser, type Page } from 'playwright-core';
 import { expect } from 'vitest';
@@ -6,8 +6,14 @@ import { expect } from 'vitest';
 /** A busy machine takes its time; nothing here is waited for by the clock. */
 export const patience = 120_000;
 
+const executablePath = '/usr/bin/chromium';
+
+/** Where it is missing nothing can be looked at; CI installs it, and there nothing is skipped. */
+export const isBrowserMissing = !existsSync(executablePath) && process.env['CI'] === undefined;
+
 export function openBrowser(): Promise<Browser> {
-  return chromium.launch({ executablePath: '/usr/bin/chromium', args: ['--no-sandbox'] });
+  // Root, as CI runs, has no sandbox of its own to offer.
+  return chromium.launch({ executablePath, args: ['--no-sandbox'] });
 }
 
 export interface Window {
