@@ -5,6 +5,7 @@ import { typedAs } from '../quantity/typed-as.js';
 import type { Acknowledgement } from '../record/journal-event.js';
 import type { Operator, OperatorRequest } from '../steps/operator.js';
 import { TerminalClosed } from './stopped.js';
+import { forgetTyped, givesKeys } from './typed-before.js';
 import { fitted } from '../quantity/word-wrap.js';
 
 /** Longer lines are hard to read, however wide the window. */
@@ -84,6 +85,7 @@ export class TerminalOperator implements Operator {
    */
   async #question(text: string, signal: AbortSignal): Promise<string> {
     const { input, output } = this.#terminal;
+    if (givesKeys(input) && !signal.aborted) await forgetTyped(input, this.#terminal.interrupted);
     if (input.readableEnded || input.destroyed) throw new TerminalClosed();
     signal.throwIfAborted();
     const closed = new AbortController();

@@ -166,6 +166,57 @@ describe('a question on a terminal never hangs', () => {
   });
 });
 
+describe('what was typed before a question', () => {
+  /** A terminal that can give keys, as one of a person does. */
+  function withKeys() {
+    const at = terminal({ keys: 'raw' });
+    const raw: boolean[] = [];
+    Object.assign(at.input, { setRawMode: (on: boolean) => raw.push(on) });
+    return { ...at, raw };
+  }
+
+  it('is no answer to it: neither an Enter nor the beginning of a word', async () => {
+    const { input, operator, shown, raw } = withKeys();
+    input.write('\ryes\rn');
+    const asked = operator.ask({ name: 'plug', text: 'Pull the plug.', answer: 'text' }, never);
+    await expect.poll(shown).toContain('> ');
+    input.write('out\r');
+    expect(await asked).toBe('out');
+    expect(shown()).not.toContain('yes');
+    expect(raw.at(-1)).toBe(false);
+    expect(input.listenerCount('error')).toBe(0);
+  });
+
+  it('is no answer to it where it is asked again', async () => {
+    const { input, operator, shown } = withKeys();
+    const asked = operator.ask({ name: 'plug', text: 'Pull the plug.', answer: 'done' }, never);
+    await expect.poll(shown).toContain('when it is done');
+    input.write('wait\r');
+    input.write('\r');
+    await expect.poll(shown).toContain('Press Enter when it is;');
+    input.write('out\r');
+    await expect.poll(() => shown().split('Not done, then.').length).toBe(3);
+    input.write('\r');
+    expect(await asked).toBe('done');
+  });
+
+  it('still stops the run where it was Ctrl-C, and then nothing is asked', async () => {
+    const { input, operator, shown, stop, raw } = withKeys();
+    input.write('\r\u0003');
+    const asked = operator.ask({ name: 'plug', text: 'Pull the plug.', answer: 'done' }, stop.signal);
+    await expect(asked).rejects.toMatchObject({ message: 'stopped with Ctrl-C' });
+    expect(shown()).not.toContain('Press Enter');
+    expect(raw).toEqual([true, false]);
+  });
+
+  it('leaves a terminal that goes away meanwhile to be found out', async () => {
+    const { input, operator } = withKeys();
+    const asked = operator.ask({ name: 'plug', text: 'Pull the plug.', answer: 'done' }, never);
+    input.destroy(Object.assign(new Error('read EIO'), { code: 'EIO' }));
+    await expect(asked).rejects.toMatchObject({ message: 'the terminal was closed at a question' });
+  });
+});
+
 describe('a question that is answered elsewhere', () => {
   it('is taken away with its line ended, and what was typed of an answer is not taken for the next', async () => {
     const { input, operator, shown } = terminal({ keys: 'raw' });

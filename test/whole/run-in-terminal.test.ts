@@ -1,4 +1,4 @@
-import { mkdtempSync, rmSync } from 'node:fs';
+import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
@@ -103,6 +103,44 @@ describe.skipIf(withoutSocat)('a run at a terminal', () => {
       terminal.type('\x03');
       await terminal.closed;
       expect(times(onScreen(terminal.shown(), 80, 24), /^ +set to +voltage|scrap|gone, about/)).toBe(0);
+    },
+    patience,
+  );
+
+  it(
+    'takes no Enter that was pressed before a question for its answer',
+    async () => {
+      const procedure = join(folder, 'plug.yaml');
+      writeFileSync(
+        procedure,
+        [
+          'railproof: procedure 1',
+          'name: plug',
+          'title: With the fan off',
+          'purpose: Shows what a question takes for its answer.',
+          'steps:',
+          '  - open-circuit: { for: 3 s }',
+          "  - operator: { name: fan, ask: 'Take the fan off K1.', answer: done }",
+          '  - open-circuit: { for: 1 s }',
+          '',
+        ].join('\n'),
+      );
+      const args = ['run', procedure, '--bench', served.bench, '--module', module, '--yes'];
+      const terminal = await startInTerminal(
+        [...args, '--runs', join(folder, 'plug')],
+        join(folder, 'plug.session'),
+        { columns: 80, rows: 24 },
+      );
+      await until(() => /^▸ now/m.test(terminal.shown()));
+      terminal.type('\r\rdo');
+      await until(() => terminal.shown().includes('Press Enter when it is done'));
+      terminal.type('not yet\r');
+      await until(() => terminal.shown().includes('Not done, then.'));
+      expect(terminal.shown()).not.toContain('donot yet');
+      expect(terminal.shown()).not.toContain('3  open-circuit  reads');
+      terminal.type('\r');
+      await terminal.closed;
+      expect(onScreen(terminal.shown(), 80, 24).join('\n')).toContain('The load is off; it was read back.');
     },
     patience,
   );
