@@ -3,7 +3,8 @@ import { dark, light, variables } from '../report/page/look.js';
 /**
  * The look of the live view: the report's paper, while it is being written. Figures are set like the entries of a
  * printed record, large enough to be read across a bench, right-aligned in their own width so that nothing moves
- * when a digit does. Whatever a colour says, a word and a shape say too.
+ * when a digit does. Whatever a colour says, a word and a shape say too. The buttons of a question take no press while
+ * nobody can have read it: the second half of a double click would answer what comes in the place of the first.
  */
 export const look = `
 :root{color-scheme:light dark;${variables(light)}}
@@ -109,7 +110,8 @@ ol,ul{margin:.4rem 0;padding-left:0;list-style:none;max-width:44rem}
 .question-text ol{padding-left:1.6rem;list-style:decimal}
 .question-text li{margin:.35rem 0}
 .question form{display:flex;flex-wrap:wrap;gap:.8rem;margin-top:1rem;align-items:flex-end}
-.question button{background:var(--paper);min-height:3.2rem;padding-inline:1.5rem}
+.question button{background:var(--paper);min-height:3.2rem;padding-inline:1.5rem;animation:unread .6s}
+@keyframes unread{from,to{pointer-events:none}}
 .question button.go{background:var(--ink);color:var(--paper)}
 .question button.go:hover{text-decoration:underline}
 .field{display:grid;gap:.25rem;flex:1 1 15rem;max-width:30rem}

@@ -69,6 +69,8 @@ const wiring = {
 } as const;
 const warmth = { heading: 'To read: ambient', text: 'How warm is it?', answer: 'temperature' } as const;
 
+const nowhere = { x: 0, y: 0, width: 0, height: 0 };
+
 describe('what is asked', () => {
   it('is answered by keyboard alone: a key that was on its way to something else answers nothing', async () => {
     const { view, page, complaints } = await viewed();
@@ -88,6 +90,30 @@ describe('what is asked', () => {
     expect(await answer).toBe('no');
     await page.locator('#question').waitFor({ state: 'hidden' });
     expect(complaints).toEqual([]);
+  });
+
+  it('takes no second half of a double click on the question before for its answer', async () => {
+    const { view, page } = await viewed();
+    const first = view.ask(wiring, never);
+    const go = page.getByRole('button', { name: 'Yes, go on' });
+    await go.waitFor();
+    // What passes by itself stands still as soon as it begins, so that no busy machine is too late for it.
+    await page.evaluate(`new MutationObserver(() => document.getAnimations().forEach((each) => each.pause()))
+      .observe(document.getElementById('question-form'), { childList: true })`);
+    await go.click();
+    expect(await first).toBe('yes');
+    const answered = vi.fn();
+    const heat = { ...wiring, heading: 'Hot surfaces: understood?' };
+    const second = view.ask(heat, never);
+    second.then(answered, answered);
+    await page.getByRole('heading', { name: heat.heading }).waitFor();
+    const { x, y, width, height } = (await go.boundingBox()) ?? nowhere;
+    await page.mouse.click(x + width / 2, y + height / 2);
+    await page.waitForTimeout(300);
+    expect(answered).not.toHaveBeenCalled();
+    await page.evaluate('document.getAnimations().forEach((each) => each.finish())');
+    await page.mouse.click(x + width / 2, y + height / 2);
+    expect(await second).toBe('yes');
   });
 
   it('and all else is reached by the Tab key, in the order in which it stands', async () => {
