@@ -25,7 +25,8 @@ export async function forgetTyped(input: Keys, interrupted: () => void): Promise
     if (keys.includes('\u0003')) interrupted();
   };
   const gone = (): void => undefined;
-  input.on('error', gone).on('data', typed);
+  // Once it was paused nothing comes for listening alone.
+  input.on('error', gone).on('data', typed).resume();
   // As lines the last one would stay behind until its Enter, and stand before the answer.
   input.setRawMode(true);
   await wait(handedOver);

@@ -187,6 +187,19 @@ describe('what was typed before a question', () => {
     expect(input.listenerCount('error')).toBe(0);
   });
 
+  it('is no answer to it where another was answered before', async () => {
+    const { input, operator, shown } = withKeys();
+    const first = operator.ask({ name: 'lid', text: 'Close the lid.', answer: 'done' }, never);
+    await expect.poll(shown).toContain('when it is done');
+    input.write('\r');
+    await first;
+    input.write('\rn');
+    const second = operator.ask({ name: 'plug', text: 'Pull the plug.', answer: 'text' }, never);
+    await expect.poll(shown).toContain('> ');
+    input.write('out\r');
+    expect(await second).toBe('out');
+  });
+
   it('is no answer to it where it is asked again', async () => {
     const { input, operator, shown } = withKeys();
     const asked = operator.ask({ name: 'plug', text: 'Pull the plug.', answer: 'done' }, never);

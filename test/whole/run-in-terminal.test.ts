@@ -119,6 +119,7 @@ describe.skipIf(withoutSocat)('a run at a terminal', () => {
           'title: With the fan off',
           'purpose: Shows what a question takes for its answer.',
           'steps:',
+          "  - operator: { name: lid, ask: 'Close the lid.', answer: done }",
           '  - open-circuit: { for: 3 s }',
           "  - operator: { name: fan, ask: 'Take the fan off K1.', answer: done }",
           '  - open-circuit: { for: 1 s }',
@@ -131,13 +132,15 @@ describe.skipIf(withoutSocat)('a run at a terminal', () => {
         join(folder, 'plug.session'),
         { columns: 80, rows: 24 },
       );
-      await until(() => /^▸ now/m.test(terminal.shown()));
-      terminal.type('\r\rdo');
       await until(() => terminal.shown().includes('Press Enter when it is done'));
+      terminal.type('\r');
+      await until(() => /^▸ now +2/m.test(terminal.shown()));
+      terminal.type('\r\rdo');
+      await until(() => terminal.shown().split('Press Enter when it is done').length > 2);
       terminal.type('not yet\r');
       await until(() => terminal.shown().includes('Not done, then.'));
       expect(terminal.shown()).not.toContain('donot yet');
-      expect(terminal.shown()).not.toContain('3  open-circuit  reads');
+      expect(terminal.shown()).not.toContain('4  open-circuit  reads');
       terminal.type('\r');
       await terminal.closed;
       expect(onScreen(terminal.shown(), 80, 24).join('\n')).toContain('The load is off; it was read back.');
