@@ -1,5 +1,5 @@
 import { closeSync, existsSync, readSync } from 'node:fs';
-import { messageOf } from '../errors/message-of.js';
+import { fileReason } from '../errors/file-reason.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { openRegular } from '../record/read-whole.js';
 import { writeWhole } from './write-whole.js';
@@ -30,7 +30,7 @@ export class FileNotKeptError extends RailproofError {
     const words = {
       'bad-name': `a ${what} is ${named}, and its name ends in ${ending}`,
       'not-ours': `this file is there already and is no ${what}, so it is not written over`,
-      unwritable: `the ${what} can't be written: ${messageOf(cause)}`,
+      unwritable: `the ${what} can't be written: ${fileReason(cause)}`,
     };
     const advice = {
       'bad-name': `name it, for example, ${example}`,

@@ -105,6 +105,10 @@ function refuseBare(answer: string): void {
     throw new UnfitAnswerError(
       `on the network it is written tcp://${answer}${answer.includes(':') ? '' : ':5025'}`,
     );
+  if (!answer.includes(':'))
+    throw new UnfitAnswerError(
+      `found "${answer}"; an address is needed, which begins with tcp:// or with serial:`,
+    );
 }
 
 interface Around {

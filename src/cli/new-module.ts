@@ -2,7 +2,7 @@ import { line, name, quantity, quantityOrWord } from '../files/building-blocks.j
 import { ambientOnLabel, changeDate } from '../files/module-schema.js';
 import type { Module } from '../files/module.js';
 import { readBy } from './answer-readers.js';
-import type { Questions } from './questions.js';
+import { type Questions, UnfitAnswerError } from './questions.js';
 
 /** What a label says, asked of whoever holds the module. Nothing of it is guessed. @throws NothingWrittenError */
 export async function askModule(questions: Questions, today: string, called?: string): Promise<Module> {
@@ -105,7 +105,12 @@ async function askChanges(questions: Questions, today: string): Promise<Module['
       ask: 'On which day?',
       why: 'Year first: 2026-11-14. By it a record is known to be from before or after.',
       usual: { value: today, words: `today, ${today}` },
-      read: readBy(changeDate),
+      read: (answer) => {
+        const day = readBy(changeDate)(answer);
+        // An older record would pass for one from before what was done since.
+        if (day > today) throw new UnfitAnswerError(`${day} is still to come; today is ${today}`);
+        return day;
+      },
     });
     changes.push({ date, what });
   }

@@ -1,7 +1,7 @@
-import { statSync } from 'node:fs';
+import { accessSync, constants, statSync } from 'node:fs';
 import { writeFile } from 'node:fs/promises';
 import { dirname } from 'node:path';
-import { messageOf } from '../errors/message-of.js';
+import { fileReason } from '../errors/file-reason.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { printable } from '../quantity/printable.js';
 import { type Questions, UnfitAnswerError } from './questions.js';
@@ -14,10 +14,9 @@ export class NewNotKeptError extends RailproofError {
   readonly path: string;
 
   constructor(path: string, cause: unknown) {
-    super(`${path}: the file can't be written: ${messageOf(cause)}`, {
+    super(`${path}: the file can't be written: ${fileReason(cause)}`, {
       cause,
-      advice:
-        'name a place where it may be written, for example railproof new bench bench.yaml, and answer again',
+      advice: 'make room there, or go to a folder where you may write, and begin again',
     });
     this.path = path;
   }
@@ -41,9 +40,26 @@ export function placeProblem(path: string): string | undefined {
   return undefined;
 }
 
+/**
+ * Looks whether a file may be written into that folder, before anything is asked in vain.
+ * @throws NewNotKeptError
+ */
+export function checkWritable(path: string): void {
+  try {
+    accessSync(dirname(path), constants.W_OK);
+  } catch (error) {
+    throw new NewNotKeptError(path, error);
+  }
+}
+
 /** Where the file goes; one that is there is written over only where that is wanted. @throws NothingWrittenError */
 export async function settledPlace(path: string, questions: Questions): Promise<NewPlace> {
-  if (statSync(path, { throwIfNoEntry: false }) === undefined) return { path, isThere: false };
+  const there = statSync(path, { throwIfNoEntry: false });
+  if (there === undefined) return { path, isThere: false };
+  if (!there.isFile()) {
+    questions.say(`\n${printable(path)} is there already, and is no file that could be written over.`);
+    return settledPlace(await askOther(questions), questions);
+  }
   const over = await questions.yes(
     {
       ask: `${printable(path)} is there already. Write over it?`,
@@ -52,16 +68,20 @@ export async function settledPlace(path: string, questions: Questions): Promise<
     false,
   );
   if (over) return { path, isThere: true };
-  const other = await questions.ask({
+  return settledPlace(await askOther(questions), questions);
+}
+
+function askOther(questions: Questions): Promise<string> {
+  return questions.ask({
     ask: 'Into which file, then?',
     why: 'Its name ends in .yaml.',
     read: (answer) => {
       const problem = placeProblem(answer);
-      if (problem === undefined) return answer;
-      throw new UnfitAnswerError(problem);
+      if (problem !== undefined) throw new UnfitAnswerError(problem);
+      checkWritable(answer);
+      return answer;
     },
   });
-  return settledPlace(other, questions);
 }
 
 /** Whole or not at all; over another file only where that was wanted. @throws NewNotKeptError */

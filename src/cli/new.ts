@@ -11,7 +11,7 @@ import { printable } from '../quantity/printable.js';
 import { check } from './check.js';
 import { askBench } from './new-bench.js';
 import { askModule } from './new-module.js';
-import { type NewPlace, placeProblem, settledPlace, writeNew } from './new-place.js';
+import { checkWritable, type NewPlace, placeProblem, settledPlace, writeNew } from './new-place.js';
 import { askProcedure } from './new-procedure.js';
 import { Questions } from './questions.js';
 import { quoted } from './quoted.js';
@@ -56,6 +56,7 @@ export async function newFile(
   if (problem !== undefined)
     throw new NewUsageError(problem, { advice: `for example: railproof new ${kind} ${kinds[kind]}` });
   if (!streams.stdin.isTTY || !streams.stderr.isTTY) throw nobodyThere(kind);
+  checkWritable(wanted.file ?? kinds[kind]);
   const questions = new Questions(streams);
   try {
     questions.say(

@@ -1,7 +1,7 @@
 import { existsSync } from 'node:fs';
 import { writeFile } from 'node:fs/promises';
 import { basename } from 'node:path';
-import { messageOf } from '../errors/message-of.js';
+import { fileReason } from '../errors/file-reason.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { adaptedDriver, type Adaptation } from '../files/adapted-driver.js';
 import type { Driver } from '../files/driver.js';
@@ -21,7 +21,7 @@ export class TrialNotKeptError extends RailproofError {
     const words = {
       'bad-name': 'this is no name for a driver: 1 to 64 letters, digits, ".", "_" or "-"',
       exists: 'this file is there already, and is not written over',
-      unwritable: `it cannot be written: ${messageOf(cause)}`,
+      unwritable: `it cannot be written: ${fileReason(cause)}`,
     };
     const advice =
       reason === 'unwritable'

@@ -1,4 +1,4 @@
-import { messageOf } from '../errors/message-of.js';
+import { fileReason } from '../errors/file-reason.js';
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 
 /** The record could not be written: no space, no permission, the disk gone. */
@@ -8,7 +8,7 @@ export class RecordWriteError extends RailproofError {
   readonly path: string;
 
   constructor(path: string, cause: unknown) {
-    super(`${path} can't be written: ${reasonOf(cause)}`, {
+    super(`${path} can't be written: ${fileReason(cause)}`, {
       advice: 'choose another folder with --runs, or make room there',
       cause,
     });
@@ -37,7 +37,7 @@ export class NoRecordError extends RailproofError {
   readonly path: string;
 
   constructor(path: string, cause?: unknown) {
-    super(`${path} is no record: ${cause === undefined ? 'it has no run.json' : reasonOf(cause)}`, {
+    super(`${path} is no record: ${cause === undefined ? 'it has no run.json' : fileReason(cause)}`, {
       advice: '`railproof runs` lists the records here',
       cause,
     });
@@ -58,24 +58,4 @@ export class BadRecordError extends RailproofError {
     });
     this.path = path;
   }
-}
-
-const reasons: Readonly<Record<string, string>> = {
-  ENOSPC: 'the disk is full',
-  EDQUOT: 'the disk quota is used up',
-  EACCES: 'permission is missing',
-  EPERM: 'permission is missing',
-  EROFS: 'the file system is read-only',
-  ENOENT: 'there is no such file or folder',
-  ENOTDIR: 'a part of the path is not a folder',
-  EEXIST: 'something of that name is there already',
-  EFBIG: 'it is larger than a file may be here',
-  EISDIR: 'it is a folder',
-  EIO: 'the disk reports an error',
-};
-
-function reasonOf(cause: unknown): string {
-  const code = (cause as { code?: unknown } | undefined)?.code;
-  if (typeof code === 'string') return reasons[code] ?? code;
-  return messageOf(cause);
 }

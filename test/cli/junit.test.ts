@@ -123,7 +123,7 @@ describe('--junit of run', () => {
       ...['--junit', join(folder, 'no-such-folder', 'junit.xml')],
     );
     expect(status).toBe(74);
-    expect(stderr).toContain("the JUnit report can't be written");
+    expect(stderr).toContain("the JUnit report can't be written: there is no such file or folder.");
     expect(existsSync(join(folder, 'none'))).toBe(false);
   });
 });

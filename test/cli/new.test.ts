@@ -1,4 +1,5 @@
 import {
+  chmodSync,
   existsSync,
   mkdirSync,
   mkdtempSync,
@@ -119,6 +120,29 @@ describe('railproof new module', () => {
     expect((await readModule(path)).value.rated).toEqual({ voltage: 12.5, current: 4, ambient: 40 });
   });
 
+  it('takes no change that is still to come', async () => {
+    const path = join(folder(), 'K1.yaml');
+    const answers = ['', ...label, 'link removed', '2999-01-01', '2026-01-02', ''];
+    const { status, screen } = await atTerminal(['new', 'module', path], answers);
+    expect(status).toBe(0);
+    expect(screen).toContain('2999-01-01 is still to come; today is 20');
+    expect((await readModule(path)).value.changes).toEqual([{ date: '2026-01-02', what: 'link removed' }]);
+  });
+
+  it('asks for another name where a folder has that of the module', async () => {
+    const here = folder();
+    mkdirSync(join(here, 'K1.yaml'));
+    const before = process.cwd();
+    onTestFinished(() => {
+      process.chdir(before);
+    });
+    process.chdir(here);
+    const { status, screen } = await atTerminal(['new', 'module'], ['K1', ...label, '', 'K1-b.yaml']);
+    expect(status).toBe(0);
+    expect(screen).toContain('K1.yaml is there already, and is no file that could be written over.');
+    expect((await readModule('K1-b.yaml')).value.name).toBe('K1');
+  });
+
   it('never takes Enter for what a label says', async () => {
     const path = join(folder(), 'K2.yaml');
     const { status, screen } = await atTerminal(['new', 'module', path], ['', '', '', '', '', '']);
@@ -223,6 +247,28 @@ describe('railproof new bench', () => {
     expect(ran.status).toBe(0);
     expect(ran.stdout).toContain('"foldback"');
   });
+
+  it('makes up no module that is too much for the load made up with it', async () => {
+    const here = folder();
+    const bench = join(here, 'bench.yaml');
+    const module = join(here, 'W1.yaml');
+    const typed = ['', 'simulated', 'W1', '45 V', '15 A', '', ''];
+    const { status, screen } = await atTerminal(['new', 'bench', bench], typed);
+    expect(status).toBe(0);
+    expect(screen).toContain("found '15 A'; at most 2.1 A is needed");
+    await atTerminal(['new', 'module', module], ['', '', '45 V', '2.1 A', '', 'mains', 'II', '', '']);
+    const files = ['--bench', bench, '--module', module, '--dry-run'];
+    for (const procedure of ['quick-look', 'real-limit', 'limit-shape', 'acceptance'])
+      expect(await railproof('run', procedure, ...files)).toMatchObject({ status: 0 });
+  });
+
+  it('offers no address that it then refuses', async () => {
+    const typed = ['', 'real', 'foo'];
+    const { screen } = await atTerminal(['new', 'bench', join(folder(), 'bench.yaml')], typed);
+    expect(screen).toContain(
+      'found "foo"; an address is needed, which begins with tcp:// or with serial: the input ended',
+    );
+  });
 });
 
 describe('railproof new is not begun', () => {
@@ -245,6 +291,19 @@ describe('railproof new is not begun', () => {
     expect(screen).toContain(message);
     expect(screen).toContain('railproof new bench');
   });
+
+  it.skipIf(process.getuid?.() === 0)(
+    'where the folder may not be written to, which is not asked in vain',
+    async () => {
+      const here = folder();
+      chmodSync(here, 0o555);
+      const path = join(here, 'K1.yaml');
+      const { status, screen } = await atTerminal(['new', 'module', path], ['', ...label, '']);
+      expect(status).toBe(74);
+      expect(screen).toContain("the file can't be written: permission is missing. Make room there, or go to");
+      expect(screen).not.toContain('What is the module called?');
+    },
+  );
 
   it('where a folder has that name', async () => {
     const path = join(folder(), 'bench.yaml');
