@@ -15,8 +15,8 @@ interface Parameter {
 
 /** Of parameters that must be given, where the first example of their schema would not do or there is none. */
 const examples: Readonly<Record<string, string>> = {
-  name: 'room',
-  ask: 'How warm is the air half a metre away?',
+  name: 'position',
+  ask: 'Which way up does the module lie?',
   to: '100 % of rated-current',
   ceiling: '150 % of rated-current',
 };

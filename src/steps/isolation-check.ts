@@ -68,7 +68,7 @@ export const isolationCheck = defineStep({
         'plug-in': z
           .boolean()
           .default(true)
-          .describe('Whether the modules are plugged in again at the end; a later step may need them.'),
+          .describe('whether the modules are plugged in again at the end; a later step may need them'),
       })
       .superRefine((given, context) => {
         for (const [lower, higher] of rising) {

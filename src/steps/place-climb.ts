@@ -38,7 +38,7 @@ export const climbParameters = {
   prove: z
     .boolean()
     .default(true)
-    .describe('Whether each module is unplugged once, to show which place is its own.'),
+    .describe('whether each module is unplugged once, to show which place is its own'),
 };
 
 /** How long a climb takes, its proofs and all that is done by hand included; roughly. */
