@@ -161,8 +161,10 @@ describe('what is asked', () => {
 
   it('is asked again where it was typed, with the reason, and the next letter replaces the answer', async () => {
     const { view, page } = await viewed({ step: 1 });
+    await page.setViewportSize({ width: 640, height: 400 });
     const first = view.ask(warmth, never);
     await page.getByLabel('Your answer').fill('lukewarm');
+    await page.evaluate('document.getElementById("typed").scrollIntoView({ block: "start" })');
     await page.keyboard.press('Enter');
     await first;
     const why = 'That was not understood: a temperature is needed.';
@@ -171,6 +173,11 @@ describe('what is asked', () => {
     await page.locator('#alarm', { hasText: why }).waitFor({ state: 'attached' });
     expect(await page.locator('#question-text p').allInnerTexts()).toEqual([why, warmth.text]);
     expect(await atKeyboard(page)).toBe('typed');
+    const top = (selector: string): Promise<number> =>
+      page.evaluate<number>(`document.querySelector('${selector}').getBoundingClientRect().top`);
+    const strip = await page.evaluate<number>('document.querySelector(".strip").offsetHeight');
+    expect(await top('#question-text')).toBeGreaterThanOrEqual(strip);
+    expect(await top('#typed')).toBeLessThan(360);
     await page.keyboard.type('23.5');
     await page.keyboard.press('Enter');
     expect(await second).toBe('23.5');
