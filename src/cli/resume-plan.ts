@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
 import { dirname, join } from 'node:path';
 import { isDeepStrictEqual } from 'node:util';
-import { type Bench, type Post, postsOf, roleOf } from '../files/bench.js';
+import { type Bench, placeOf, type Post, postsOf, roleOf } from '../files/bench.js';
 import { driversOfChannels } from '../files/bench-channels.js';
 import type { Driver } from '../files/driver.js';
 import { besideBench, parseBench, readBench } from '../files/read-bench.js';
@@ -17,11 +17,12 @@ import type { RunHeader } from '../record/run-header.js';
 import { makePlan, type Plan } from '../run/plan.js';
 import { parseCarried, type TakenOver } from '../run/taken-over.js';
 import { stepKinds } from '../steps/index.js';
+import { WrongRoleError } from './bench-driver.js';
 import { stepsOf } from './header-of.js';
 import type { LoadedPlan } from './load-plan.js';
 import { requireSameBench } from './resume-bench.js';
 import { standingFor } from './resume-shown.js';
-import { type DriverFiles, planDrivers, vocabulary, WrongRoleError } from './wiring.js';
+import { type DriverFiles, planDrivers, vocabulary } from './wiring.js';
 
 /** What a run that goes on takes over. */
 export interface Resumption {
@@ -95,7 +96,8 @@ function driversOf(bench: Bench, texts: RecordedTexts): DriverFiles {
 
 function inRole(file: FileRead<Driver> | undefined, post: Post, texts: RecordedTexts): FileRead<Driver> {
   if (file === undefined) throw texts.lacks(`the driver of the ${post}`);
-  if (file.value.role !== roleOf(post)) throw new WrongRoleError(texts.path, post, file.value);
+  if (file.value.role !== roleOf(post))
+    throw new WrongRoleError(`${texts.path}: ${placeOf(post).join('.')}`, post, file.value);
   return file;
 }
 

@@ -2,17 +2,16 @@ import { fileURLToPath } from 'node:url';
 import { dirname, sep } from 'node:path';
 import { findingNames, findingWords } from '../analysis/finding-names.js';
 import type { Clock } from '../clock/clock.js';
-import { exitCodes, RailproofError } from '../errors/railproof-error.js';
 import { realClock } from '../clock/real-clock.js';
 import { VirtualClock } from '../clock/virtual-clock.js';
-import { type Bench, type BenchDrivers, placeOf, type Post, postsOf, roleOf } from '../files/bench.js';
+import { type Bench, type BenchDrivers, type Post, postsOf } from '../files/bench.js';
 import { driversOfChannels } from '../files/bench-channels.js';
 import type { Driver } from '../files/driver.js';
-import { readDriver } from '../files/read-driver.js';
 import type { FileRead } from '../files/read-text.js';
 import type { Connect } from '../instrument/connect.js';
 import { stepKinds } from '../steps/index.js';
 import type { OpenedSimulation } from '../simulation/open-simulation.js';
+import { readDriverAt } from './bench-driver.js';
 import { connectors } from './connectors.js';
 import { Watchman } from './watchman.js';
 
@@ -40,23 +39,10 @@ export const vocabulary = { stepKinds, findings: findingNames, words: findingWor
 /** The driver of each post of a bench, the load's first. */
 export type DriverFiles = readonly { readonly post: Post; readonly file: FileRead<Driver> }[];
 
-/** A bench gives an instrument a part that its driver is not for. */
-export class WrongRoleError extends RailproofError {
-  readonly code = 'WRONG_ROLE';
-  readonly exitCode = exitCodes.badFile;
-
-  constructor(bench: string, post: Post, driver: Driver) {
-    super(
-      `${bench}: ${placeOf(post).join('.')}: ${driver.name} is a driver for a ${driver.role}, not for a ${roleOf(post)}`,
-      { advice: '`railproof drivers` lists the shipped ones with their roles' },
-    );
-  }
-}
-
 /**
  * The drivers that a bench names, shipped or beside the bench file, each for the role and the channel it is given;
  * all of them, or those of some posts.
- * @throws BadFileError, MissingFileError, NotShippedError, WrongRoleError
+ * @throws BadFileError, NoDriverError, WrongRoleError
  */
 export async function readBenchDrivers(
   bench: FileRead<Bench>,
@@ -66,9 +52,7 @@ export async function readBenchDrivers(
   const files: DriverFiles[number][] = [];
   for (const [post, place] of postsOf(bench.value)) {
     if (posts?.includes(post) === false) continue;
-    const file = await readDriver(place.driver, where);
-    if (file.value.role !== roleOf(post)) throw new WrongRoleError(bench.path, post, file.value);
-    files.push({ post, file });
+    files.push({ post, file: await readDriverAt(bench, post, place.driver, where) });
   }
   return driversOfChannels(bench, files);
 }

@@ -135,7 +135,7 @@ describe('run', () => {
       runs,
     );
     expect(stderr).toBe(
-      'the procedure needs someone at the bench for its wiring, its cautions and there is no terminal. Run it in a terminal, or with --view, which serves a page to answer on; --yes acknowledges wiring and cautions only.\n',
+      'the procedure needs someone at the bench for its wiring and its cautions, and there is no terminal. Run it in a terminal, or with --view, which serves a page to answer on; --yes acknowledges wiring and cautions only.\n',
     );
     expect(status).toBe(64);
   });
@@ -200,7 +200,7 @@ describe('check', () => {
     writeFileSync(bench, text.replace('load-input-scpi', 'meter-read-scpi'));
     const { status, stderr } = await railproof('check', bench);
     expect(stderr).toMatch(
-      /role\.yaml: instruments\.load: meter-read-scpi is a driver for a meter, not for a load/,
+      /role\.yaml:5:19: instruments\.load\.driver: meter-read-scpi is a driver for a meter, not for a load/,
     );
     expect(status).toBe(65);
   });
@@ -213,7 +213,9 @@ describe('check', () => {
       readFileSync('fixtures/benches/nursery.yaml', 'utf8').replace('load-input-scpi', 'load-imput-scpi'),
     );
     const { status, stderr } = await railproof('check', bench);
-    expect(stderr).toMatch(/no driver is called 'load-imput-scpi'; did you mean 'load-input-scpi'\?/);
+    expect(stderr).toMatch(
+      /odd\.yaml:5:19: instruments\.load\.driver: no driver is called 'load-imput-scpi'; did you mean 'load-input-scpi'\?/,
+    );
     expect(status).toBe(66);
   });
 });
