@@ -77,10 +77,10 @@ function correct({ text: why }: Question, before: string): void {
   if (box === null) return;
   box.value = before;
   box.setAttribute('aria-invalid', 'true');
-  // The reason is longer than what stood there, and in a low window would come to stand behind the strip.
-  text.scrollIntoView({ block: 'nearest' });
   box.focus();
   box.select();
+  // The reason is longer than what stood there, and in a low window would come to stand behind the strip.
+  text.scrollIntoView({ block: 'nearest' });
   alarm(why);
 }
 

@@ -164,10 +164,10 @@ describe('what is asked', () => {
     await page.setViewportSize({ width: 640, height: 400 });
     const first = view.ask(warmth, never);
     await page.getByLabel('Your answer').fill('lukewarm');
-    await page.evaluate('document.getElementById("typed").scrollIntoView({ block: "start" })');
+    await page.evaluate('document.getElementById("typed").scrollIntoView({ block: "center" })');
     await page.keyboard.press('Enter');
     await first;
-    const why = 'That was not understood: a temperature is needed.';
+    const why = "That was not understood: found 'lukewarm'; a temperature is needed: 40 °C, 40 degC.";
     const second = view.ask({ ...warmth, text: `${why}\n${warmth.text}` }, never);
     await page.locator('#question', { hasText: why }).waitFor();
     await page.locator('#alarm', { hasText: why }).waitFor({ state: 'attached' });
