@@ -1,4 +1,5 @@
 import { exitCodes, RailproofError } from '../errors/railproof-error.js';
+import { listed } from '../quantity/listed.js';
 
 /** The person at the bench wants the run to end. */
 export class StoppedByOperator extends RailproofError {
@@ -38,7 +39,7 @@ export class OperatorAbsentError extends RailproofError {
   readonly exitCode = exitCodes.usage;
 
   constructor(steps: readonly string[]) {
-    super(`the procedure needs someone at the bench for ${steps.join(', ')} and there is no terminal`, {
+    super(`the procedure needs someone at the bench for ${listed(steps)}, and there is no terminal`, {
       advice:
         'run it in a terminal, or with --view, which serves a page to answer on; --yes acknowledges wiring and cautions only',
     });

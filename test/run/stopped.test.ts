@@ -7,7 +7,7 @@ it('a procedure that needs someone says for which steps, and that --yes is not e
   expect(new OperatorAbsentError(['step 2 (operator)', 'its cautions'])).toMatchObject({
     exitCode: 64,
     message:
-      'the procedure needs someone at the bench for step 2 (operator), its cautions and there is no terminal',
+      'the procedure needs someone at the bench for step 2 (operator) and its cautions, and there is no terminal',
     advice:
       'run it in a terminal, or with --view, which serves a page to answer on; --yes acknowledges wiring and cautions only',
   });
