@@ -48,6 +48,21 @@ async function printedUnder(heading: string): Promise<string> {
   return printed.join('\n').replace(/\s+/g, ' ').toLowerCase();
 }
 
+/** The keys and words of all formats, and the names of what is shipped. */
+function knownWords(): ReadonlySet<string> {
+  const named = ['procedures', 'drivers', 'procedures/tolerances'].flatMap((shelf) =>
+    readdirSync(shelf).map((file) => file.replace(/\.yaml$/, '')),
+  );
+  const known = new Set(named);
+  for (const file of readdirSync('schemas').filter((name) => name.endsWith('.json')))
+    JSON.parse(readFileSync(join('schemas', file), 'utf8'), (key, value: unknown) => {
+      known.add(key);
+      if (typeof value === 'string') known.add(value);
+      return value;
+    });
+  return known;
+}
+
 describe('the page for what puzzles at the bench', () => {
   it.each(entries)(
     'quotes under "$heading" what is really printed',
@@ -57,6 +72,14 @@ describe('the page for what puzzles at the bench', () => {
       for (const words of quoted) expect(printed).toContain(words.replace(/\s+/g, ' ').toLowerCase());
     },
   );
+
+  it('names no key, finding or word of a file that there is not', () => {
+    const known = knownWords();
+    const others = ['yes', 'analyse'];
+    const words = [...page.matchAll(/(?<!`)`([a-z][a-z\d-]*)`(?!`)/g)].map(([, word = '']) => word);
+    expect(words.length).toBeGreaterThan(15);
+    expect(words.filter((word) => !known.has(word) && !others.includes(word))).toEqual([]);
+  });
 
   it('has each entry that is held to what is printed, and a link to each', () => {
     const headings = entries.map(({ heading }) => heading);
