@@ -91,10 +91,24 @@ function askAddress(
       if (port === undefined) throw new UnfitAnswerError(`there is no port with the number ${answer}`);
       refuseBare(port);
       const address = parseAddress(port);
-      if (address.kind === 'tcp' || address.kind === 'serial') return address;
+      if (address.kind === 'tcp' || address.kind === 'serial') {
+        refuseTaken(address, chosen);
+        return address;
+      }
       throw new UnfitAnswerError(`"${answer}" is no place of a real instrument; tcp:// or serial: is needed`);
     },
   });
+}
+
+/** One given twice is mostly a slip, and two parts that speak over one line come in each other's way. */
+function refuseTaken(address: ConnectionAddress, chosen: ReadonlyMap<Part, Chosen>): void {
+  const whereOf = (at: ConnectionAddress): string => (at.kind === 'serial' ? at.path : formatAddress(at));
+  for (const [part, { place }] of chosen)
+    if (whereOf(place.connection) === whereOf(address))
+      throw new UnfitAnswerError(
+        `the ${part} is at ${formatAddress(place.connection)} already`,
+        'give the address of another instrument; where one is really both, write it into the file afterwards',
+      );
 }
 
 /** An address as its menu, or the system, writes it, which lacks only how to connect to it. @throws UnfitAnswerError */

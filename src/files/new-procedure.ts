@@ -99,17 +99,23 @@ export function emptyProcedure(
   ].join('');
 }
 
+/** What stands apart from what is above it. */
+const apart: readonly string[] = ['circuit', 'wiring', 'steps', 'criteria', 'derating'];
+
 function remarked(key: string, part: string): string {
   const words = keyWords[key];
-  return words === undefined ? part : comment(words) + part;
+  const above = apart.includes(key) ? '\n' : '';
+  return words === undefined ? part : above + comment(words) + part;
 }
 
 function limitsRemark(): string {
-  return comment(limitsWords) + comment(limitsExample);
+  return '\n' + comment(limitsWords) + comment(limitsExample);
 }
 
 function deratingRemark(): string {
-  return comment(keyWords['derating'] ?? '') + comment('derating: { margin: 80 %, above-nameplate: never }');
+  return (
+    '\n' + comment(keyWords['derating'] ?? '') + comment('derating: { margin: 80 %, above-nameplate: never }')
+  );
 }
 
 /** Each top-level key with all that stands up to the next one. */

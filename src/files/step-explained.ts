@@ -15,6 +15,7 @@ interface Parameter {
 
 /** Of parameters that must be given, where the first example of their schema would not do or there is none. */
 const examples: Readonly<Record<string, string>> = {
+  for: '1 min',
   name: 'position',
   ask: 'Which way up does the module lie?',
   to: '100 % of rated-current',

@@ -303,6 +303,7 @@ describe('an empty procedure', () => {
       for (const key of keys) expect(part).toMatch(new RegExp(`^ {2}# {5}${key}: \\S`, 'm'));
     }
     expect(text).toContain('#     ceiling: the search goes no higher (must be given)');
+    expect(text).toContain('# - wait: { for: 1 min }');
   });
 });
 
@@ -321,6 +322,11 @@ it('each key of a file that is written has a comment above it', () => {
     const keys = lines.flatMap((line, index) => (/^[a-z-]+:/.test(line) && index > 0 ? [index] : []));
     expect(keys.length).toBeGreaterThan(4);
     for (const index of keys) expect(lines[index - 1]).toMatch(/^ *# \S/);
+    // Nothing runs into what is above it.
+    if (keys.some((index) => lines[index]?.startsWith('steps:') === true))
+      expect(text).toMatch(
+        /\n\n# How the bench is wired[^]*\n\n# What this procedure never[^]*\n\n# What is to be done/,
+      );
   }
 });
 

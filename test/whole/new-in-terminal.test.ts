@@ -79,7 +79,8 @@ describe.skipIf(withoutSocat)('railproof new, at a terminal', () => {
       await answer('What is it on this bench?', '\r');
       await answer('Which driver speaks to it?', `${mute.address}\r`);
       await answer('what is asked for now is its driver', 'load-input-scpi\r');
-      await answer('Where is the next instrument?', `${mute.address}\r`);
+      await answer('Where is the next instrument?', `${formatAddress(instruments.load.connection)}\r`);
+      await answer('the load is at', `${mute.address}\r`);
       await answer('Nothing answers. Is it switched on', 'thermometer\r');
       await answer('Which driver speaks to it?', '1\r');
       await answer('Where is the next instrument?', `${refused}\r`);
