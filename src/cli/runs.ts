@@ -1,3 +1,4 @@
+import { existsSync } from 'node:fs';
 import { join } from 'node:path';
 import { z } from 'zod';
 import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
@@ -40,7 +41,7 @@ export async function runs(
   if (wanted.json === true) {
     streams.stdout.write(jsonText({ format: 'railproof/runs 1', runs: listed } satisfies RunsJson));
   } else if (rows.length === 0) {
-    show(streams.stdout, `No records in ${printable(wanted.folder)}.\n`);
+    show(streams.stdout, noRecords(wanted.folder));
   } else {
     const head = ['record', 'ended', 'outcome', 'recommended', ''];
     const sides = ['left', 'left', 'left', 'right', 'left'] as const;
@@ -48,6 +49,11 @@ export async function runs(
     show(streams.stdout, `${lines.join('\n')}\n`);
   }
   return exitCodes.conforms;
+}
+
+function noRecords(folder: string): string {
+  if (!existsSync(join(folder, 'run.json'))) return `No records in ${printable(folder)}.\n`;
+  return `${printable(folder)} is one record itself; railproof analyse shows what it holds.\n`;
 }
 
 interface Entry {

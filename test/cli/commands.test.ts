@@ -177,6 +177,9 @@ describe('runs', () => {
     const empty = join(folder, 'none');
     mkdirSync(empty);
     expect((await railproof('runs', empty)).stdout).toBe(`No records in ${empty}.\n`);
+    expect((await railproof('runs', 'fixtures/runs/20261130T091500Z-K1-real-limit')).stdout).toContain(
+      'is one record itself; railproof analyse shows what it holds.',
+    );
     expect((await railproof('runs', join(folder, 'nowhere'))).status).toBe(66);
   });
 });
