@@ -12,8 +12,11 @@ const refused = place('question-error');
 const answered = place('answered');
 
 let open: Question | undefined;
-/** The question that was answered here. */
+/** The question to which an answer is on its way from here, and the one that was answered here. */
+let awaited: number | undefined;
 let ours: number | undefined;
+/** The last that was taken away; `stopped` where that was no answer. */
+let gone: { readonly question: Question; readonly stopped: boolean } | undefined;
 /** What was last typed here, and to what; the runner asks the same again where it did not understand. */
 let typedHere: { readonly heading: string; readonly step: number; readonly text: string } | undefined;
 /** The step in which the open question is asked. */
@@ -36,7 +39,9 @@ export function showQuestion(state: ViewState): void {
   show(section, question !== undefined);
   if (before !== undefined) {
     answeredIn = step;
-    tellOfAnswer(before, stopping || isOver);
+    gone = { question: before, stopped: stopping || isOver };
+    // Whose answer was taken is not known yet where one is on its way.
+    if (awaited !== before.id) tellOfAnswer(gone);
   }
   if (question === undefined) {
     if (wasHere && !isOver) place('module').focus();
@@ -51,7 +56,8 @@ export function showQuestion(state: ViewState): void {
   typedHere = undefined;
 }
 
-function tellOfAnswer({ id, heading: asked }: Question, stopped: boolean): void {
+function tellOfAnswer({ question, stopped }: NonNullable<typeof gone>): void {
+  const { id, heading: asked } = question;
   const how = stopped ? 'taken away, as the run ends' : 'answered at the terminal, or on another page';
   const words = `“${asked}” was ${how}.`;
   show(answered, ours !== id && !stopped);
@@ -143,13 +149,17 @@ function input(): HTMLInputElement | null {
 
 async function answer(question: Question, given: string): Promise<void> {
   sending = true;
-  ours = question.id;
+  awaited = question.id;
   typedHere = input() === null ? undefined : { heading: question.heading, step: askedIn, text: given };
   const { sent, words } = await send('/answer', { question: question.id, answer: given });
-  if (open?.id !== question.id) return;
+  if (awaited === question.id) awaited = undefined;
+  if (sent === 'taken') ours = question.id;
+  if (open?.id !== question.id) {
+    if (gone?.question.id === question.id) tellOfAnswer(gone);
+    return;
+  }
   sending = false;
   if (sent === 'taken') return;
-  ours = undefined;
   typedHere = undefined;
   refuse(refusal(sent, words, expectedWords(question)));
 }

@@ -183,6 +183,24 @@ describe('what is asked', () => {
     expect(await second).toBe('23.5');
   });
 
+  it('that was answered elsewhere while an answer was on its way says that the other one was taken', async () => {
+    const { view, page } = await viewed({ step: 1 });
+    const elsewhere = new AbortController();
+    const takenAway = expect(view.ask(warmth, elsewhere.signal)).rejects.toThrow();
+    await page.route('**/answer', async (route) => {
+      elsewhere.abort(new Error('answered at the terminal'));
+      await page.locator('#question').waitFor({ state: 'hidden' });
+      await route.continue();
+    });
+    await page.getByLabel('Your answer').fill('23 degC');
+    await page.keyboard.press('Enter');
+    await takenAway;
+    const words = `“${warmth.heading}” was answered at the terminal, or on another page.`;
+    await page.locator('#answered', { hasText: words }).waitFor();
+    expect(await page.locator('#status').textContent()).not.toContain('The answer was sent.');
+    await page.unroute('**/answer');
+  });
+
   it('goes when it was answered elsewhere, and that is said', async () => {
     const { view, page } = await viewed({ step: 1 });
     const elsewhere = new AbortController();
