@@ -9,8 +9,7 @@ export class InstrumentUnreachableError extends RailproofError {
 
   constructor(facts: { address: string; reason: string; advice?: string; cause?: unknown }) {
     super(`${facts.address}: ${facts.reason}`, {
-      advice:
-        facts.advice ?? 'Is it switched on, is the cable in, and is the address right?',
+      advice: facts.advice ?? 'Is it switched on, is the cable in, and is the address right?',
       cause: facts.cause,
     });
     this.address = facts.address;
