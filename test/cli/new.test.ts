@@ -1,5 +1,4 @@
 import {
-  chmodSync,
   existsSync,
   mkdirSync,
   mkdtempSync,
@@ -291,19 +290,6 @@ describe('railproof new is not begun', () => {
     expect(screen).toContain(message);
     expect(screen).toContain('railproof new bench');
   });
-
-  it.skipIf(process.getuid?.() === 0)(
-    'where the folder may not be written to, which is not asked in vain',
-    async () => {
-      const here = folder();
-      chmodSync(here, 0o555);
-      const path = join(here, 'K1.yaml');
-      const { status, screen } = await atTerminal(['new', 'module', path], ['', ...label, '']);
-      expect(status).toBe(74);
-      expect(screen).toContain("the file can't be written: permission is missing. Make room there, or go to");
-      expect(screen).not.toContain('What is the module called?');
-    },
-  );
 
   it('where a folder has that name', async () => {
     const path = join(folder(), 'bench.yaml');

@@ -24,18 +24,20 @@ interface Terminal {
   readonly environment?: NodeJS.ProcessEnv;
   /** Where the program is started; the root of the repository when left out. */
   readonly folder?: string;
+  /** What starts it: words of a shell that go before its command. */
+  readonly startedBy?: string;
 }
 
 /** A `railproof` on a terminal of its own, of 200 columns when nothing else is said: a pty of which socat holds the other end. */
 export async function startInTerminal(
   args: readonly string[],
   file: string,
-  { columns = 200, rows = 0, environment = {}, folder = root }: Terminal = {},
+  { columns = 200, rows = 0, environment = {}, folder = root, startedBy = '' }: Terminal = {},
 ): Promise<InTerminal> {
   const command = [process.execPath, program, ...args].map((word) => `'${word}'`).join(' ');
   writeFileSync(
     file,
-    `stty cols ${columns} rows ${rows}\ntty > '${file}.tty'\necho $$ > '${file}.pid'\nexec ${command}\n`,
+    `stty cols ${columns} rows ${rows}\ntty > '${file}.tty'\necho $$ > '${file}.pid'\nexec ${startedBy} ${command}\n`,
   );
   const terminal = spawn('socat', ['-', `EXEC:sh ${file},pty,setsid,ctty,stderr`], {
     cwd: folder,

@@ -11,6 +11,7 @@ import { type InTerminal, startInTerminal } from './in-terminal.js';
 import { instrument, nobody } from './instruments.js';
 import { railproof } from './railproof.js';
 import { type Served, serve } from './served.js';
+import { noSmallDisks, onLockedDisk } from './small-disk.js';
 
 const patience = 180_000;
 
@@ -138,6 +139,22 @@ describe.skipIf(withoutSocat)('railproof new, at a terminal', () => {
       await terminal.closed;
       expect(screenOf(terminal)).toMatch(new RegExp(`\\n${words} Begin again whenever you like\\.\\n$`));
       expect(readdirSync(here)).toEqual([]);
+    },
+    patience,
+  );
+
+  it.skipIf(noSmallDisks)(
+    'asks nothing where what is answered could not be written',
+    async () => {
+      const disk = mkdtempSync(join(folder, 'disk-'));
+      const path = join(disk, 'K1.yaml');
+      const terminal = await startInTerminal(['new', 'module', path], join(folder, 'locked'), {
+        startedBy: onLockedDisk(disk),
+      });
+      await terminal.closed;
+      expect(screenOf(terminal).replace(/\s+/g, ' ')).toBe(
+        `${path}: the file can't be written: the file system is read-only. Make room there, or go to a folder where you may write, and begin again. `,
+      );
     },
     patience,
   );

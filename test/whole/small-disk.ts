@@ -22,6 +22,11 @@ const script = [
   'cp -R "$disk/." "$kept"; exit $status',
 ].join('\n');
 
+/** The words of a shell that go before a command to whom the disk at `disk` may only be read; nobody else sees that disk. */
+export function onLockedDisk(disk: string): string {
+  return `unshare ${(way ?? []).join(' ')} sh -c 'mount -t tmpfs -o ro none "$0" && exec "$@"' '${disk}'`;
+}
+
 export interface OnSmallDisk extends Ended {
   /** A copy of all that was on the disk at the end. */
   readonly kept: string;
