@@ -1,6 +1,6 @@
 import type { ConnectionAddress } from '../files/bench.js';
 import { count, quantity } from '../files/building-blocks.js';
-import { formatAddress, parseAddress } from '../files/connection-address.js';
+import { formatAddress, lineOf, parseAddress } from '../files/connection-address.js';
 import type { Driver, Role } from '../files/driver.js';
 import type { NewBench, NewInstrument } from '../files/new-bench.js';
 import { readDriver } from '../files/read-driver.js';
@@ -102,9 +102,8 @@ function askAddress(
 
 /** One given twice is mostly a slip, and two parts that speak over one line come in each other's way. */
 function refuseTaken(address: ConnectionAddress, chosen: ReadonlyMap<Part, Chosen>): void {
-  const whereOf = (at: ConnectionAddress): string => (at.kind === 'serial' ? at.path : formatAddress(at));
   for (const [part, { place }] of chosen)
-    if (whereOf(place.connection) === whereOf(address))
+    if (lineOf(place.connection) === lineOf(address))
       throw new UnfitAnswerError(
         `the ${part} is at ${formatAddress(place.connection)} already`,
         'give the address of another instrument; where one is really both, write it into the file afterwards',

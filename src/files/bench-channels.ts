@@ -1,4 +1,5 @@
 import { type Bench, type InstrumentPlace, placeOf, type Post, postsOf } from './bench.js';
+import { lineOf } from './connection-address.js';
 import { driverOfChannel } from './driver-channel.js';
 import type { Channels, Driver } from './driver.js';
 import { BadFileError } from './file-error.js';
@@ -73,7 +74,8 @@ function* sharedChoices(
 ): Generator<Complaint> {
   const atAddress = new Map<string, PostDriver>();
   for (const one of drivers) {
-    const address = sharedAddress(places.get(one.post));
+    const place = places.get(one.post);
+    const address = place && lineOf(place.connection);
     if (address === undefined) continue;
     const other = atAddress.get(address);
     atAddress.set(address, one);
@@ -86,13 +88,6 @@ function* sharedChoices(
         'message of its own: what one is told could go to the channel of the other',
     };
   }
-}
-
-/** Of the addresses that two may have at a time. */
-function sharedAddress(place: InstrumentPlace | undefined): string | undefined {
-  const connection = place?.connection;
-  if (connection?.kind === 'tcp') return `tcp://${connection.host}:${connection.port}`;
-  return connection?.kind === 'serial' ? `serial:${connection.path}` : undefined;
 }
 
 function fromTo({ first, last }: Channels): string {

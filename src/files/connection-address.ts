@@ -16,6 +16,12 @@ export class AddressError extends RailproofError {
   }
 }
 
+/** The line that an instrument is spoken to over, however it is set; undefined where two would be in nobody's way. */
+export function lineOf(address: ConnectionAddress): string | undefined {
+  if (address.kind === 'tcp') return `tcp://${address.host}:${address.port}`;
+  return address.kind === 'serial' ? `serial:${address.path}` : undefined;
+}
+
 /** One example of each form of address. */
 export const addressForms = [
   'tcp://127.0.0.1:5025',
