@@ -2,6 +2,7 @@ import type { ConnectionAddress } from '../files/bench.js';
 import { formatAddress } from '../files/connection-address.js';
 import type { Driver, Role } from '../files/driver.js';
 import type { FamilyMatch } from '../instrument/match.js';
+import { suits } from '../instrument/trial-meeting.js';
 import { visible } from '../instrument/visible.js';
 import type { Met } from './meet-instrument.js';
 import { troubleshootingPage } from './package-facts.js';
@@ -103,7 +104,7 @@ export function wireLacking(met: Met, { wire }: Driver): string | undefined {
       : []),
     // The plain end of line is tried first, and many who hear it hear the others as well.
     ...(sendEnd !== '\n' && wire.sendEnd !== sendEnd ? [`send-end: ${JSON.stringify(sendEnd)}`] : []),
-    ...(words.replyEnd?.endsWith(wire.replyEnd) === false
+    ...(words.replyEnd !== undefined && !suits(wire.replyEnd, words.replyEnd)
       ? [`reply-end: ${JSON.stringify(words.replyEnd)}`]
       : []),
   ];

@@ -67,7 +67,7 @@ function wireAs(wire: Wire, sendEnd: string, { prompt, echo, replyEnd }: FirstWo
 }
 
 /** With a line feed as its end, a carriage return before it is dropped; behind a carriage return, a line feed. */
-function suits(expected: string, seen: string): boolean {
+export function suits(expected: string, seen: string): boolean {
   return expected === seen || (seen === '\r\n' && (expected === '\n' || expected === '\r'));
 }
 
