@@ -45,7 +45,7 @@ const boundaries = Object.entries(mayImport).map(([room, allowed]) => ({
 }));
 
 export default tseslint.config(
-  { ignores: ['dist', 'coverage', 'runs'] },
+  { ignores: ['dist', '.speed', 'coverage', 'runs'] },
   js.configs.recommended,
   ...tseslint.configs.strictTypeChecked,
   {
