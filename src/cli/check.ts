@@ -1,15 +1,10 @@
 import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
 import { type AnyFile, readAnyFile } from '../files/read-any-file.js';
-import { parseDriver } from '../files/read-driver.js';
-import { readStages } from '../files/read-stages.js';
 import type { FileRead } from '../files/read-text.js';
 import { printable } from '../quantity/printable.js';
-import { checkDialogueOf } from './check-dialogue.js';
 import { errorText } from './error-text.js';
-import { recordsOf } from './stage-records.js';
 import { say } from './say.js';
 import type { Streams } from './streams.js';
-import { readBenchDrivers, vocabulary } from './wiring.js';
 
 /**
  * `railproof check`: looks at each file and says what is wrong with it, or that it is right. A bench is
@@ -20,7 +15,7 @@ export async function check(files: readonly string[], streams: Streams): Promise
   let status: ExitCode = exitCodes.conforms;
   for (const path of files) {
     try {
-      const file = await readAnyFile(path, vocabulary);
+      const file = await readAnyFile(path, async () => (await import('./wiring.js')).vocabulary);
       const also = await checkTogether(file);
       say(streams.stdout, `${printable(path)}: a ${file.value.kind} file, and right${also}`, { hang: '  ' });
     } catch (error) {
@@ -32,18 +27,24 @@ export async function check(files: readonly string[], streams: Streams): Promise
   return status;
 }
 
-/** What a file is checked together with, and a few words about it. */
+/** What a file is checked together with, and a few words about it; what that needs is loaded when it is met. */
 async function checkTogether(file: FileRead<AnyFile>): Promise<string> {
   const { kind, content } = file.value;
   if (kind === 'driver') {
+    const { checkDialogueOf } = await import('./check-dialogue.js');
     const exchanges = checkDialogueOf({ ...file, value: content });
     return exchanges === 0 ? '' : `; ${counted(exchanges)} of its dialogue too`;
   }
   if (kind === 'stages') {
+    const { recordsOf } = await import('./stage-records.js');
+    const { readStages } = await import('../files/read-stages.js');
     const records = recordsOf((await readStages(file.path)).value.modules);
     return `; the ${records.length} records of its modules are there too`;
   }
   if (kind === 'bench') {
+    const { parseDriver } = await import('../files/read-driver.js');
+    const { checkDialogueOf } = await import('./check-dialogue.js');
+    const { readBenchDrivers } = await import('./wiring.js');
     const drivers = await readBenchDrivers({ ...file, value: content });
     for (const driver of new Map(drivers.map(({ file: each }) => [each.path, each])).values()) {
       // As its file has it: the bench's is that of one channel, and a dialogue may speak of any.

@@ -3,13 +3,7 @@ import type { Driver } from './driver.js';
 import { fileKindOf } from './parse-file.js';
 import type { Module } from './module.js';
 import type { Procedure } from './procedure.js';
-import { parseBench } from './read-bench.js';
-import { parseDriver } from './read-driver.js';
-import { parseModule } from './read-module.js';
-import { parseProcedure } from './read-procedure.js';
-import { parseStages } from './read-stages.js';
 import { readAndParse, type FileRead } from './read-text.js';
-import { parseTolerance } from './read-tolerance.js';
 import type { Stages } from './stages.js';
 import type { Tolerance } from './tolerance.js';
 import type { Vocabulary } from './vocabulary.js';
@@ -24,25 +18,38 @@ export type AnyFile =
   | { readonly kind: 'stages'; readonly content: Stages };
 
 /**
- * Reads a file as what its first line says it is.
+ * Reads a file as what its first line says it is. Only what that kind needs is loaded, the words of steps and findings
+ * too: whoever checks a module waits for no schema of a procedure.
  * @throws BadFileError, MissingFileError
  */
-export function readAnyFile(path: string, vocabulary: Vocabulary): Promise<FileRead<AnyFile>> {
-  return readAndParse(path, (text, fileName): AnyFile => {
+export function readAnyFile(path: string, vocabulary: () => Promise<Vocabulary>): Promise<FileRead<AnyFile>> {
+  return readAndParse(path, async (text, fileName): Promise<AnyFile> => {
     const kind = fileKindOf(text, fileName);
     switch (kind) {
-      case 'module':
+      case 'module': {
+        const { parseModule } = await import('./read-module.js');
         return { kind, content: parseModule(text, fileName) };
-      case 'bench':
+      }
+      case 'bench': {
+        const { parseBench } = await import('./read-bench.js');
         return { kind, content: parseBench(text, fileName) };
-      case 'driver':
+      }
+      case 'driver': {
+        const { parseDriver } = await import('./read-driver.js');
         return { kind, content: parseDriver(text, fileName) };
-      case 'procedure':
-        return { kind, content: parseProcedure(text, fileName, vocabulary) };
-      case 'tolerance':
-        return { kind, content: parseTolerance(text, fileName, vocabulary) };
-      case 'stages':
+      }
+      case 'procedure': {
+        const { parseProcedure } = await import('./read-procedure.js');
+        return { kind, content: parseProcedure(text, fileName, await vocabulary()) };
+      }
+      case 'tolerance': {
+        const { parseTolerance } = await import('./read-tolerance.js');
+        return { kind, content: parseTolerance(text, fileName, await vocabulary()) };
+      }
+      case 'stages': {
+        const { parseStages } = await import('./read-stages.js');
         return { kind, content: parseStages(text, fileName) };
+      }
     }
   });
 }

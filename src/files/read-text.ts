@@ -18,12 +18,12 @@ export interface FileRead<T> {
  */
 export async function readAndParse<T>(
   path: string,
-  parse: (text: string, fileName: string) => T,
+  parse: (text: string, fileName: string) => T | Promise<T>,
 ): Promise<FileRead<T>> {
   const bytes = await readBounded(path);
   const text = decode(bytes, path);
   const sha256 = createHash('sha256').update(bytes).digest('hex');
-  return { value: parse(text, path), text, path, sha256 };
+  return { value: await parse(text, path), text, path, sha256 };
 }
 
 async function readBounded(path: string): Promise<Uint8Array> {

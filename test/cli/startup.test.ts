@@ -44,3 +44,11 @@ it('analysing a record loads no page and no charts of one', async () => {
   expect(scripts.some((url) => url.endsWith('/cli/analyse.js'))).toBe(true);
   expect(scripts.filter((url) => /\/d3-|\/report\/(page|chart|run-page|run-charts)\//.test(url))).toEqual([]);
 });
+
+it('checking a module loads nothing of steps, findings, instruments or records', async () => {
+  const scripts = await loadedBy('check', 'fixtures/modules/K1.yaml');
+  expect(scripts.some((url) => url.endsWith('/files/read-module.js'))).toBe(true);
+  expect(
+    scripts.filter((url) => /\/dist\/(steps|analysis|instrument|bench|record|circuit)\//.test(url)),
+  ).toEqual([]);
+});
