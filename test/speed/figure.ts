@@ -34,11 +34,8 @@ export interface Skipped {
   readonly why: string;
 }
 
-/** One file of this folder: what it measures, as often and as long as it takes to be sure. */
-export interface Benchmark {
-  readonly name: string;
-  readonly measure: () => Figure[] | Promise<Figure[]>;
-}
+/** One file of `benchmarks`, its default export: measures as often and as long as it takes to be sure. */
+export type Benchmark = () => Promise<Figure[]>;
 
 export function reached({ ratio, bound }: Measured): boolean {
   return 'atMost' in bound ? ratio <= bound.atMost : ratio >= bound.atLeast;

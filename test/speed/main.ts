@@ -14,7 +14,7 @@ import { figuresAsTable } from './table.js';
 const { values } = parseArgs({ options: { only: { type: 'string' }, alone: { type: 'string' } } });
 
 if (values.alone === undefined) await measureAll(values.only);
-else process.stdout.write(JSON.stringify(await (await benchmark(values.alone)).measure()));
+else process.stdout.write(JSON.stringify(await (await benchmark(values.alone))()));
 
 async function measureAll(only: string | undefined): Promise<void> {
   const names = only === undefined ? allNames() : [only];

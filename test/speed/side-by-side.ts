@@ -1,4 +1,7 @@
-import { medianOf } from './median-of.js';
+import type * as checked from '../../src/statistics/checked.js';
+import { built } from './built.js';
+
+export const { median } = await built<typeof checked>('statistics/checked.js');
 
 /** Two things that are timed in turns, so that a machine that slows down slows both. */
 export interface SideBySide {
@@ -31,9 +34,9 @@ export async function timedSideBySide({ ours, rival, rounds, unmeasured = 1 }: S
     if (round >= 0) taken.push(one);
   }
   return {
-    ours: medianOf(taken.map((one) => one.ours)),
-    rival: medianOf(taken.map((one) => one.rival)),
-    ratio: medianOf(taken.map((one) => one.ours / one.rival)),
+    ours: median(taken.map((one) => one.ours)),
+    rival: median(taken.map((one) => one.rival)),
+    ratio: median(taken.map((one) => one.ours / one.rival)),
   };
 }
 

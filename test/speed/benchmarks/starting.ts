@@ -1,24 +1,17 @@
 import { spawnSync } from 'node:child_process';
-import { fileURLToPath } from 'node:url';
+import { program, root } from '../../whole/railproof.js';
 import type { Benchmark, Figure } from '../figure.js';
 import { timedSideBySide } from '../side-by-side.js';
 
-const root = fileURLToPath(new URL('../../..', import.meta.url));
-
-export default {
-  name: 'starting',
-  async measure() {
-    return [
-      await against('starting-for-the-version', ['--version'], 1.6),
-      await against('starting-for-a-check', ['check', 'fixtures/modules/K1.yaml'], 3),
-    ];
-  },
-} satisfies Benchmark;
+export default (async () => [
+  await against('starting-for-the-version', ['--version'], 1.6),
+  await against('starting-for-a-check', ['check', 'fixtures/modules/K1.yaml'], 3),
+]) satisfies Benchmark;
 
 async function against(name: string, args: readonly string[], atMost: number): Promise<Figure> {
   const { ours, rival, ratio } = await timedSideBySide({
     ours: () => {
-      node('dist/cli/main.js', ...args);
+      node(program, ...args);
     },
     rival: () => {
       node('-e', '0');
