@@ -44,7 +44,8 @@ export interface BrokenLineFit {
 
 /**
  * Least-squares continuous line of two pieces, with the break searched exactly over all gaps between
- * points (see `bestSplit`), in time linear in the number of points when they are sorted by x already.
+ * points (see `bestSplit`), in time linear in the number of points as long as they need no comparing to be
+ * brought in order (see `sortedPoints`).
  *
  * Standard uncertainties by linearisation about the optimum (Gauss–Newton covariance, n − 4 degrees of
  * freedom): the slopes as in a line through their own part, and for the break

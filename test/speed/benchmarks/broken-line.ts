@@ -9,19 +9,50 @@ const { fitBrokenLine } = await built<typeof brokenLineFit>('statistics/broken-l
 const { fitLine } = await built<typeof lineFit>('statistics/line-fit.js');
 const { randomFrom } = await built<typeof randomness>('statistics/random.js');
 
-export default (async () => [
-  await fitted(1_000, { repeats: 200, rounds: 31 }),
-  await fitted(1_000_000, { repeats: 1, rounds: 11 }),
-]) satisfies Benchmark;
+export default (async () => {
+  const few = { repeats: 200, rounds: 31 };
+  const many = { repeats: 1, rounds: 11 };
+  return [
+    await fitted(inOrder(1_000), 'in-order', few),
+    await fitted(inDisorder(1_000), 'in-disorder', few),
+    await fitted(inOrder(1_000_000), 'in-order', many),
+    await fitted(inDisorder(1_000_000), 'in-disorder', many),
+  ];
+}) satisfies Benchmark;
+
+interface Points {
+  readonly x: Float64Array;
+  readonly y: Float64Array;
+}
 
 /** The voltage of a module that leaves its droop for a steeper limit at 5 A, with a millivolt of noise. */
-async function fitted(
-  points: number,
-  { repeats, rounds }: { readonly repeats: number; readonly rounds: number },
-): Promise<Figure> {
+function inOrder(points: number): Points {
   const random = randomFrom(points);
   const x = Float64Array.from({ length: points }, (_, index) => (8 * index) / points);
   const y = x.map((current) => 15 - 0.02 * current - 2 * Math.max(0, current - 5) + 0.001 * random.normal());
+  return { x, y };
+}
+
+/** The same points, shuffled. */
+function inDisorder(points: number): Points {
+  const { x, y } = inOrder(points);
+  const random = randomFrom(-points);
+  for (let left = points; left > 1; left -= 1) {
+    const drawn = Math.floor(random.uniform(0, left));
+    for (const values of [x, y]) {
+      const last = values[left - 1] as number;
+      values[left - 1] = values[drawn] as number;
+      values[drawn] = last;
+    }
+  }
+  return { x, y };
+}
+
+async function fitted(
+  { x, y }: Points,
+  order: 'in-order' | 'in-disorder',
+  { repeats, rounds }: { readonly repeats: number; readonly rounds: number },
+): Promise<Figure> {
   const repeatedly = (fit: () => unknown) => (): unknown => {
     let last: unknown;
     for (let turn = 0; turn < repeats; turn += 1) last = fit();
@@ -35,8 +66,8 @@ async function fitted(
   });
   return {
     kind: 'measured',
-    name: `broken-line-of-${points}`,
-    what: `broken line through ${points} points`,
+    name: `broken-line-of-${x.length}-${order}`,
+    what: `broken line through ${x.length} points ${order.replace('-', ' ')}`,
     ours: { value: (ours / repeats) * 1000, unit: 'ms' },
     rival: { value: (rival / repeats) * 1000, unit: 'ms', what: 'straight line' },
     ratio,
