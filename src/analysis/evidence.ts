@@ -10,6 +10,7 @@ import type {
 import type { Seconds } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
 import { type Happening, HappeningCollector, type Happenings } from './happenings.js';
+import { KeptPoints } from './kept-points.js';
 import { PointCollector, type PointEvidence } from './point-evidence.js';
 import { answerInWords, inputInWords, recoveryInWords } from './told-happening.js';
 
@@ -48,6 +49,7 @@ export interface StepEvidence {
   /** Where in the journal it stands, by lines that count from 1. */
   readonly lines: { readonly first: number; readonly last: number };
   readonly settings: Readonly<Record<string, unknown>>;
+  /** In the order in which they were taken; where they were many looks at the same, neighbours as one. */
   readonly points: readonly PointEvidence[];
   readonly recoveries: readonly Recovery[];
   readonly answers: readonly Answered[];
@@ -61,14 +63,22 @@ type Growing<T> = {
       : T[Key];
 };
 
+interface GrowingStep extends Growing<Omit<StepEvidence, 'points'>> {
+  readonly points: KeptPoints;
+}
+
 /** There are half a dozen names; this is room for those of other versions. */
 const mostCautions = 50;
 
-/** Takes the events of a journal one after the other; memory grows with the points, not with the readings. */
+/**
+ * Takes the events of a journal one after the other; memory grows with the points, not with the readings, and of
+ * those that look at the same again and again not with them either.
+ */
 export class EvidenceCollector {
   readonly #header: RunHeader;
-  readonly #steps: Growing<StepEvidence>[] = [];
-  #point: PointCollector | undefined;
+  readonly #steps: GrowingStep[] = [];
+  /** The point under way, and where it is kept once it has ended; nowhere outside of a step. */
+  #point: { readonly collector: PointCollector; readonly into: KeptPoints | undefined } | undefined;
   #ended: Ended | undefined;
   #tripped: GuardTripped | undefined;
   #readings = 0;
@@ -93,7 +103,7 @@ export class EvidenceCollector {
       case 'reading':
         this.#readings += 1;
         if (step) step.readings += 1;
-        this.#point?.add(event);
+        this.#point?.collector.add(event);
         return;
       case 'step-began': {
         const settings = this.#header.steps[event.step - 1]?.settings ?? {};
@@ -105,22 +115,27 @@ export class EvidenceCollector {
           readings: 0,
           lines: { first: this.#lines, last: this.#lines },
           settings,
-          points: [],
+          points: new KeptPoints(),
           recoveries: [],
           answers: [],
         });
         return;
       }
       case 'point-began':
-        this.#point = new PointCollector(this.#header.bench, event, event.t);
-        step?.points.push(this.#point.point);
+        this.#keepPoint();
+        this.#point = {
+          collector: new PointCollector(this.#header.bench, event, event.t),
+          into: step?.points,
+        };
         return;
       case 'point-ended':
         // Taken again; what was read before the connection was lost counts for nothing.
         if (event.outcome === 'interrupted') {
-          step?.points.pop();
           this.#tell('taken-again', 'a point was broken off by a lost connection and taken again', event);
-        } else if (this.#point) this.#point.point.outcome = event.outcome;
+        } else if (this.#point) {
+          this.#point.collector.point.outcome = event.outcome;
+          this.#keepPoint();
+        }
         this.#point = undefined;
         return;
       case 'recovery':
@@ -167,7 +182,7 @@ export class EvidenceCollector {
   result(): Evidence {
     return {
       header: this.#header,
-      steps: this.#steps,
+      steps: this.#steps.map((step) => ({ ...step, points: this.#pointsOf(step) })),
       ended: this.#ended,
       tripped: this.#tripped,
       readings: this.#readings,
@@ -178,6 +193,15 @@ export class EvidenceCollector {
       cautions: this.#cautions,
       happenings: this.#happenings.result(),
     };
+  }
+
+  #keepPoint(): void {
+    if (this.#point !== undefined) this.#point.into?.add(this.#point.collector.point);
+  }
+
+  #pointsOf({ points }: GrowingStep): readonly PointEvidence[] {
+    const open = this.#point;
+    return open?.into === points ? [...points.all(), open.collector.point] : points.all();
   }
 
   #tell(kind: Happening['kind'], text: string, { t }: Pick<TimedEvent, 't'>): void {

@@ -4,6 +4,7 @@ import { studentTDistribution } from '../statistics/student-t.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence } from './evidence.js';
 import { type Finding, measured } from './finding.js';
+import { evenly } from './pooled-points.js';
 import { moduleVoltageErrors, promised } from './promised-errors.js';
 import { soundLine } from './sound-line.js';
 
@@ -13,7 +14,7 @@ import { soundLine } from './sound-line.js';
  */
 export function openCircuitFindings(evidence: Evidence): readonly Finding[] {
   const step = stepsOf(evidence, 'open-circuit').at(0);
-  const points = (step?.points ?? []).filter((point) => point.moduleVoltage.count > 0);
+  const points = evenly((step?.points ?? []).filter((point) => point.moduleVoltage.count > 0));
   if (step === undefined || points.length === 0) return [];
   const voltage = points.reduce((sum, point) => sum + point.moduleVoltage.mean, 0) / points.length;
   const { instrument } = moduleVoltageErrors(evidence.header);

@@ -1,13 +1,19 @@
-import type { Amperes, Seconds, Volts } from '../quantity/quantity.js';
+import type { Amperes, Celsius, Seconds, Volts } from '../quantity/quantity.js';
 import type { PointBegan, PointOutcome, ReadingTaken } from '../record/journal-event.js';
 import type { RunHeader } from '../record/run-header.js';
 import { momentsAt, RunningMoments } from '../statistics/running-moments.js';
 
-/** One point, boiled down to a few numbers. */
+/** One point, boiled down to a few numbers; of a long row of looks at the same, several neighbours as one. */
 export interface PointEvidence {
+  /** Its number in the step; of several the first one's. */
   readonly point: number;
+  /** How many neighbours it stands for: 1, but in a row that is longer than what is kept of it look by look. */
+  readonly looks: number;
+  /** Of several, what the looks among them reached that were furthest from the rest; undefined for one. */
+  readonly reach: Reach | undefined;
   readonly phase: PointBegan['phase'];
   readonly set: PointBegan['set'];
+  /** When it began; of several the mean of that. */
   readonly t: Seconds;
   /** Undefined when the record was cut off in the middle of it. */
   readonly outcome: PointOutcome | undefined;
@@ -27,6 +33,12 @@ export interface PointEvidence {
   readonly of: string | undefined;
   /** Of an overload and of a trace, the first samples one by one: an average would hide how the module limits. */
   readonly samples: readonly { readonly voltage: Volts; readonly current: Amperes }[];
+}
+
+/** The lowest and the highest mean of a look; not a number where none read it. */
+export interface Reach {
+  readonly moduleVoltage: readonly [low: Volts, high: Volts];
+  readonly temperature: readonly [low: Celsius, high: Celsius];
 }
 
 type Growing<T> = {
@@ -111,6 +123,8 @@ function addIfValue(moments: RunningMoments, value: number): void {
 function newPoint({ point, phase, set, of }: PointBegan, t: Seconds): Growing<PointEvidence> {
   return {
     point,
+    looks: 1,
+    reach: undefined,
     phase,
     set,
     t,

@@ -2,6 +2,8 @@ import type { Amperes, Celsius, Kelvins, Seconds, Volts } from '../quantity/quan
 import { RunningMoments } from '../statistics/running-moments.js';
 import { stepsOf } from './curve.js';
 import type { Evidence, PointEvidence, StepEvidence } from './evidence.js';
+import type { Reach } from './point-evidence.js';
+import { evenly, mostLooks, taken } from './pooled-points.js';
 import { settledTemperature, type SettledTemperature } from './settled-temperature.js';
 
 /** A soak, as its record shows it. */
@@ -22,6 +24,17 @@ export interface SoakSeen {
   readonly limit: Celsius | undefined;
   /** The time over which it was watched for change. */
   readonly over: Seconds;
+  /** How many neighbouring looks are one, of those that are older than the last hour; 1 in any but a long soak. */
+  readonly each: number;
+  readonly read: { readonly voltages: Read; readonly temperatures: Read };
+}
+
+/** What is there to be drawn. */
+export interface Read {
+  /** In how many looks. */
+  readonly all: number;
+  /** Of each look; where several are one the lowest and the highest of them, so that none is hidden by the others. */
+  readonly values: readonly { readonly t: Seconds; readonly value: number }[];
 }
 
 export interface Start {
@@ -46,21 +59,42 @@ export function soaksSeen(evidence: Evidence): readonly SoakSeen[] {
 
 function soakSeen({ step, settings, points }: StepEvidence, held: readonly PointEvidence[]): SoakSeen {
   const current = new RunningMoments();
-  for (const point of held) current.add(point.current.mean);
+  for (const point of evenly(held)) current.add(point.current.mean);
   const warm = held.filter(({ temperature }) => temperature.count > 0);
-  const temperatures = warm.map(({ temperature }) => temperature.mean);
-  const times = warm.map(({ t }) => t);
   const over = numberAt(settings, 'over') ?? usualWindow;
   return {
     step,
     current: current.mean,
     looks: held.map(({ t, moduleVoltage }) => ({ t, voltage: moduleVoltage.mean })),
-    temperatures,
-    times,
+    temperatures: temperaturesOf(warm),
+    times: timesOf(warm),
     start: startOf(points),
-    settling: temperatures.length === 0 ? undefined : settledTemperature(times, temperatures, over),
+    settling: settlingOf(evenly(warm), over),
     limit: numberAt(settings, 'limit'),
     over,
+    each: mostLooks(held),
+    read: { voltages: readOf(held, 'moduleVoltage'), temperatures: readOf(warm, 'temperature') },
+  };
+}
+
+function settlingOf(warm: readonly PointEvidence[], over: Seconds): SettledTemperature | undefined {
+  return warm.length === 0 ? undefined : settledTemperature(timesOf(warm), temperaturesOf(warm), over);
+}
+
+function temperaturesOf(points: readonly PointEvidence[]): readonly Celsius[] {
+  return points.map(({ temperature }) => temperature.mean);
+}
+
+function timesOf(points: readonly PointEvidence[]): readonly Seconds[] {
+  return points.map(({ t }) => t);
+}
+
+function readOf(points: readonly PointEvidence[], what: keyof Reach): Read {
+  return {
+    all: taken(points),
+    values: points.flatMap((point) =>
+      (point.reach?.[what] ?? [point[what].mean]).map((value) => ({ t: point.t, value })),
+    ),
   };
 }
 

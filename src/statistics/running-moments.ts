@@ -29,6 +29,41 @@ export class RunningMoments {
     if (value > this.#maximum) this.#maximum = value;
   }
 
+  /**
+   * Takes in all values that another has taken, as if each had come here: exact but for rounding (T. F. Chan,
+   * G. H. Golub & R. J. LeVeque, The American Statistician 37 (1983); from memory). The other stays as it is.
+   */
+  addAll(other: RunningMoments): void {
+    if (other.#count === 0) return;
+    const count = this.#count + other.#count;
+    const apart = other.#mean - this.#mean;
+    this.#sumOfSquares += other.#sumOfSquares + apart * apart * this.#count * (other.#count / count);
+    this.#mean += apart * (other.#count / count);
+    this.#count = count;
+    this.#minimum = Math.min(this.#minimum, other.#minimum);
+    this.#maximum = Math.max(this.#maximum, other.#maximum);
+  }
+
+  /** Writes them into a row of numbers, `momentsWidth` of them from `at` on, where many are to be kept in little room. */
+  writeTo(row: Float64Array, at: number): void {
+    row[at] = this.#count;
+    row[at + 1] = this.#mean;
+    row[at + 2] = this.#sumOfSquares;
+    row[at + 3] = this.#minimum;
+    row[at + 4] = this.#maximum;
+  }
+
+  /** Those that were written there. */
+  static readFrom(row: Float64Array, at: number): RunningMoments {
+    const moments = new RunningMoments();
+    moments.#count = row[at] as number;
+    moments.#mean = row[at + 1] as number;
+    moments.#sumOfSquares = row[at + 2] as number;
+    moments.#minimum = row[at + 3] as number;
+    moments.#maximum = row[at + 4] as number;
+    return moments;
+  }
+
   get count(): number {
     return this.#count;
   }
@@ -72,6 +107,9 @@ export class RunningMoments {
     if (this.#count === 0) throw new UnfitDataError('RunningMoments', 'there are no values');
   }
 }
+
+/** How many numbers moments are written as. */
+export const momentsWidth = 5;
 
 /** Those that are kept for a name, begun where there are none yet. */
 export function momentsAt(moments: Map<string, RunningMoments>, name: string): RunningMoments {

@@ -42,6 +42,8 @@ export interface PointSort {
   readonly shape: Shape;
   readonly look: number;
   readonly points: readonly ChartPoint[];
+  /** How many were measured, where some of these stand for several. */
+  readonly all?: number;
   /** Whether they are joined in their order. */
   readonly joined?: boolean;
 }
@@ -136,7 +138,7 @@ function drawnOf(sorts: readonly PointSort[]): readonly DrawnSort[] {
     .map((sort) => ({
       ...sort,
       points: thinned(sort.points, stretches, [from, to]),
-      all: sort.points.length,
+      all: sort.all ?? sort.points.length,
     }))
     .filter(({ points }) => points.length > 0);
 }

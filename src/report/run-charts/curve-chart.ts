@@ -158,7 +158,7 @@ function inWords(result: Result, seen: CurveSeen, held: readonly PointSort[]): r
   const { findings, header } = result;
   const counted = held
     .filter(({ points }) => points.length > 0)
-    .map(({ name, points }) => `${points.length} ${name}`);
+    .map(({ name, points, all = points.length }) => `${all} ${name}`);
   const plate = ratedOf(header);
   const found = (name: string, words: string): readonly string[] => {
     const finding = findingNamed(findings, name);

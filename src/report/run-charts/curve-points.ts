@@ -1,5 +1,6 @@
 import type { Evidence, PointEvidence, StepEvidence } from '../../analysis/evidence.js';
 import { isHeld } from '../../analysis/curve.js';
+import { taken } from '../../analysis/pooled-points.js';
 import type { ChartPoint, PointSort } from '../chart/point-chart.js';
 import { amps, stepInWords, volts } from './in-words.js';
 
@@ -25,17 +26,24 @@ function sortOf(phase: Phase): Sort {
 /** All points that were held, of a soak too; every one with its values and the step that it is of. */
 export function heldSorts({ steps }: Evidence): readonly PointSort[] {
   const points: Record<Sort, ChartPoint[]> = { up: [], down: [], search: [], soak: [] };
+  const counts: Record<Sort, number> = { up: 0, down: 0, search: 0, soak: 0 };
   for (const step of steps) {
     for (const point of step.points) {
       if (!isHeld(point)) continue;
-      points[sortOf(point.phase)].push({
+      const sort = sortOf(point.phase);
+      counts[sort] += point.looks;
+      points[sort].push({
         x: point.current.mean,
         y: point.moduleVoltage.mean,
         says: () => `held ${valuesOf(point)}; ${origin(step, point)}`,
       });
     }
   }
-  return (Object.keys(sorts) as Sort[]).map((sort) => ({ ...sorts[sort], points: points[sort] }));
+  return (Object.keys(sorts) as Sort[]).map((sort) => ({
+    ...sorts[sort],
+    points: points[sort],
+    all: counts[sort],
+  }));
 }
 
 /** What a search held on its way to the limit. */
@@ -55,17 +63,24 @@ export function isSoakAlone({ steps }: Evidence): boolean {
 
 /** With the input off. */
 export function idleSort({ steps }: Evidence): PointSort {
-  const points = steps
+  const idle = steps
     .filter(({ kind }) => kind === 'open-circuit')
     .flatMap((step) =>
       step.points
         .filter(({ moduleVoltage }) => moduleVoltage.count > 0)
-        .map((point): ChartPoint => {
-          const { mean } = point.moduleVoltage;
-          return { x: 0, y: mean, says: () => `open circuit: ${volts(mean)}; ${origin(step, point)}` };
-        }),
+        .map((point) => ({ step, point, y: point.moduleVoltage.mean })),
     );
-  return { name: 'open circuit', shape: 'plus', look: 5, points };
+  return {
+    name: 'open circuit',
+    shape: 'plus',
+    look: 5,
+    points: idle.map(({ step, point, y }): ChartPoint => ({
+      x: 0,
+      y,
+      says: () => `open circuit: ${volts(y)}; ${origin(step, point)}`,
+    })),
+    all: taken(idle.map(({ point }) => point)),
+  };
 }
 
 /** Where the module dropped out, at the current that was set: what flowed then was not that of the curve. */
@@ -89,9 +104,10 @@ function valuesOf({ moduleVoltage, current }: PointEvidence): string {
 
 function origin(
   step: StepEvidence,
-  { point, moduleVoltage: { count, sampleDeviation } }: PointEvidence,
+  { point, looks, moduleVoltage: { count, sampleDeviation } }: PointEvidence,
 ): string {
   const scatter =
     sampleDeviation === undefined || count < 2 ? '' : `, which scatter by ${volts(sampleDeviation)}`;
-  return `${stepInWords(step)}, point ${point}; ${count === 1 ? '1 reading' : `${count} readings`}${scatter}`;
+  const which = looks === 1 ? `point ${point}` : `${looks} points from ${point} on`;
+  return `${stepInWords(step)}, ${which}; ${count === 1 ? '1 reading' : `${count} readings`}${scatter}`;
 }

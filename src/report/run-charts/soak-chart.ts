@@ -63,13 +63,13 @@ function temperatureChart(
   seen: SoakSeen,
   { start, end, title }: Span & { readonly title: string },
 ): Markup {
-  const { settling, temperatures, times } = seen;
-  const points = temperatures.map((temperature, index): ChartPoint => {
-    const t = (times[index] ?? start) - start;
+  const { settling, read } = seen;
+  const points = read.temperatures.values.map(({ t: at, value }): ChartPoint => {
+    const t = at - start;
     return {
       x: t,
-      y: temperature,
-      says: () => `${degrees(temperature)} after ${minutes(t)}; step ${seen.step}, soak`,
+      y: value,
+      says: () => `${degrees(value)} after ${minutes(t)}; step ${seen.step}, soak`,
     };
   });
   return pointChart({
@@ -78,7 +78,7 @@ function temperatureChart(
     description: inWords(findings, seen),
     x: { label: 'Time under load', dimension: 'time', from: 0, to: end * 1.01 },
     y: { label: 'Temperature', dimension: 'temperature' },
-    sorts: [{ name: 'read', shape: 'dot', look: 3, points }],
+    sorts: [{ name: 'read', shape: 'dot', look: 3, points, all: read.temperatures.all }],
     lines: settling === undefined ? [] : wayOf(settling, seen, { start, end }),
     levels: levelsOf(evidence, seen),
     whiskers: whiskersOf(evidence, findings, seen, end),
@@ -136,7 +136,7 @@ function levelsOf(evidence: Evidence, seen: SoakSeen): readonly Level[] {
 }
 
 function voltageChart(findings: readonly Finding[], seen: SoakSeen, { start, end }: Span): Markup {
-  const { looks, step } = seen;
+  const { looks, step, read } = seen;
   const line = driftLine(seen);
   const drift = findingNamed(findings, 'thermal-drift');
   const title = 'Voltage during the soak';
@@ -155,11 +155,12 @@ function voltageChart(findings: readonly Finding[], seen: SoakSeen, { start, end
         name: 'read',
         shape: 'dot',
         look: 3,
-        points: looks.map(({ t, voltage }) => ({
+        points: read.voltages.values.map(({ t, value }) => ({
           x: t - start,
-          y: voltage,
-          says: () => `${volts(voltage)} after ${minutes(t - start)}; step ${step}, soak`,
+          y: value,
+          says: () => `${volts(value)} after ${minutes(t - start)}; step ${step}, soak`,
         })),
+        all: read.voltages.all,
       },
     ],
     lines:
@@ -200,7 +201,7 @@ function settlesInWords({ settled, timeConstant }: SettledTemperature): string {
 function caption(
   { steps }: Evidence,
   findings: readonly Finding[],
-  { settling, step, temperatures }: SoakSeen,
+  { settling, step, temperatures, each }: SoakSeen,
 ): string {
   const soaks = steps.filter(({ kind }) => kind === 'soak').length;
   const rise = findingNamed(findings, 'temperature-rise');
@@ -218,6 +219,12 @@ function caption(
             'well as the scatter about the curve.',
         ]),
     ...(settling?.timeConstant === undefined ? [] : ['Dashed: predicted, not read.']),
+    ...(each === 1
+      ? []
+      : [
+          `The fit goes through means of ${each} looks that follow each other; of those before the last hour the lowest and ` +
+            'the highest are drawn.',
+        ]),
     ...(soaks > 1 ? [`Of ${soaks} soaks this is step ${step}, on which the findings rest.`] : []),
   ].join(' ');
 }

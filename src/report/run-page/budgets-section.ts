@@ -1,6 +1,7 @@
 import { coverageOf } from '../../analysis/coverage-of.js';
 import type { StepEvidence } from '../../analysis/evidence.js';
 import type { Finding } from '../../analysis/finding.js';
+import { taken } from '../../analysis/pooled-points.js';
 import { formatInterval, formatQuantity } from '../../quantity/format-quantity.js';
 import { listed } from '../../quantity/listed.js';
 import type { Dimension } from '../../quantity/quantity.js';
@@ -120,7 +121,7 @@ function readingsInWords(steps: readonly StepEvidence[], { step: number }: Findi
   const journal = `lines ${lines.first} to ${lines.last} of journal.jsonl`;
   return readings === 0
     ? `Step ${step.step}, ${kind}: no readings; ${journal}.`
-    : `Step ${step.step}, ${kind}: ${counted(points.length, 'point')}, ${counted(readings, 'reading')}; ` +
+    : `Step ${step.step}, ${kind}: ${counted(taken(points), 'point')}, ${counted(readings, 'reading')}; ` +
         `${journal}, the rows of step ${step.step} in readings.csv.`;
 }
 

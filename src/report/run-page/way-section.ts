@@ -1,5 +1,6 @@
 import type { StepEvidence } from '../../analysis/evidence.js';
 import type { Happening } from '../../analysis/happenings.js';
+import { taken } from '../../analysis/pooled-points.js';
 import { clockTime, spokenTime } from '../../quantity/spoken-time.js';
 import { type Content, element, type Markup } from '../page/markup.js';
 import { section } from '../page/page.js';
@@ -106,5 +107,5 @@ function begun(result: Result, step: StepEvidence): readonly Content[] {
     ended === undefined
       ? element('span', { class: 'state bad' }, 'broken off')
       : [spokenTime(ended - began), part !== undefined && ', in an earlier run'];
-  return [clockTime(began), took, points.length, readings];
+  return [clockTime(began), took, taken(points), readings];
 }
