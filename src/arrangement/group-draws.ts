@@ -31,7 +31,7 @@ export function extentOf(branches: readonly DrawnBranch[]): Extent {
   const usable = new Float64Array(draws);
   const ends = new Float64Array(draws);
   for (let draw = 0; draw < draws; draw += 1) {
-    const end = walk.climb(draw, []);
+    const end = walk.climb(draw);
     if (end.first >= 0) counts[end.first] = (counts[end.first] ?? 0) + 1;
     firstLoad[draw] = end.firstLoad;
     usable[draw] = Math.min(end.end, end.ceiling);
@@ -55,7 +55,7 @@ export function wayUp(best: readonly DrawnBranch[]): {
   readonly corners: readonly WalkCorner[];
 } {
   const corners: WalkCorner[] = [];
-  const end = new ShareWalk(best, usualSag).climb(0, [], undefined, (corner) => corners.push(corner));
+  const end = new ShareWalk(best, usualSag).climb(0, (corner) => corners.push(corner));
   return { end, corners };
 }
 
@@ -106,7 +106,7 @@ export function* drawnAt(
   const values = new Float64Array(Math.min(block, loads.length) * width * draws);
   for (let from = 0; from < loads.length; from += block) {
     const some = Float64Array.from(loads.slice(from, from + block));
-    for (let draw = 0; draw < draws; draw += 1) walk.climb(draw, some, { values, draws });
+    for (let draw = 0; draw < draws; draw += 1) walk.currentsAt(draw, some, { values, draws });
     for (const load of some.keys()) {
       yield Array.from({ length: width }, (_, column) => {
         const start = (load * width + column) * draws;
@@ -123,7 +123,7 @@ export function drawnImbalance(branches: readonly DrawnBranch[], load: Amperes):
   const walk = new ShareWalk(branches, usualSag);
   const imbalances = new Float64Array(draws);
   for (let draw = 0; draw < draws; draw += 1) {
-    walk.climb(draw, [load], { values, draws });
+    walk.currentsAt(draw, [load], { values, draws });
     imbalances[draw] = imbalanceOf(branches.map((_, branch) => values[branch * draws + draw] ?? Number.NaN));
   }
   return drawnInterval(imbalances);
@@ -137,7 +137,7 @@ export function mostLoaded(branches: readonly DrawnBranch[], load: Amperes): rea
   const counts = branches.map(() => 0);
   let held = 0;
   for (let draw = 0; draw < draws; draw += 1) {
-    walk.climb(draw, [load], { values, draws });
+    walk.currentsAt(draw, [load], { values, draws });
     const currents = branches.map((_, branch) => values[branch * draws + draw] ?? Number.NaN);
     const most = currents.indexOf(Math.max(...currents));
     if (most < 0) continue;

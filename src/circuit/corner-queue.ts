@@ -12,14 +12,13 @@ export type CornerKind = typeof begins | typeof atCeiling | typeof atLimit;
  */
 export class CornerQueue {
   readonly #bus: Float64Array;
-  readonly #branch: Int32Array;
-  readonly #kind: Uint8Array;
+  /** Which of a branch's corners: the branch, and in the lowest two bits the kind. */
+  readonly #corner: Int32Array;
   #length = 0;
 
   constructor(most: number) {
     this.#bus = new Float64Array(most);
-    this.#branch = new Int32Array(most);
-    this.#kind = new Uint8Array(most);
+    this.#corner = new Int32Array(most);
   }
 
   get length(): number {
@@ -32,15 +31,15 @@ export class CornerQueue {
 
   /** Behind those at the same bus. Cost: the corners that lie lower; they are few. */
   insert(bus: number, branch: number, kind: CornerKind): void {
+    const buses = this.#bus;
+    const corners = this.#corner;
     let place = this.#length;
-    for (; place > 0 && this.busOf(place - 1) < bus; place -= 1) {
-      this.#bus[place] = this.busOf(place - 1);
-      this.#branch[place] = this.branchOf(place - 1);
-      this.#kind[place] = this.kindOf(place - 1);
+    for (; place > 0 && (buses[place - 1] as number) < bus; place -= 1) {
+      buses[place] = buses[place - 1] as number;
+      corners[place] = corners[place - 1] as number;
     }
-    this.#bus[place] = bus;
-    this.#branch[place] = branch;
-    this.#kind[place] = kind;
+    buses[place] = bus;
+    corners[place] = (branch << 2) | kind;
     this.#length += 1;
   }
 
@@ -49,10 +48,10 @@ export class CornerQueue {
   }
 
   branchOf(place: number): number {
-    return this.#branch[place] as number;
+    return (this.#corner[place] as number) >> 2;
   }
 
   kindOf(place: number): CornerKind {
-    return this.#kind[place] as CornerKind;
+    return ((this.#corner[place] as number) & 3) as CornerKind;
   }
 }
