@@ -89,7 +89,8 @@ describe('imports point one way', () => {
 
   it.each([
     ['serialport', 'instrument'],
-    ['yaml', 'files'],
+    ['yaml', 'libraries'],
+    ['zod', 'libraries'],
     ['csv-stringify', 'record'],
     ['simple-statistics', 'statistics'],
     ['fastest-levenshtein', 'quantity'],

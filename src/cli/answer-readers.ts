@@ -1,4 +1,4 @@
-import type { z } from 'zod';
+import type * as z from '../libraries/zod.js';
 import { checkValue } from '../files/check-value.js';
 import { UnfitAnswerError } from './questions.js';
 

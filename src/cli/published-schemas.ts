@@ -1,4 +1,4 @@
-import type { z } from 'zod';
+import type * as z from '../libraries/zod.js';
 import { draftOf, type JsonSchema } from '../files/draft-schema.js';
 import { fileKinds, type FileKind } from '../files/file-kind.js';
 import { jsonSchemaOf } from '../files/json-schema.js';

@@ -1,6 +1,6 @@
 import { existsSync } from 'node:fs';
 import { join } from 'node:path';
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { exitCodes, type ExitCode } from '../errors/railproof-error.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import { printable } from '../quantity/printable.js';

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { type Bench, placeOf, postsOf, roleOf } from './bench.js';
 import { choice, line, quantity } from './building-blocks.js';
 import { camelKeys, withoutHeader } from './camel-keys.js';

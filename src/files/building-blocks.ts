@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { RailproofError } from '../errors/railproof-error.js';
 import { dimensionWords, needed } from '../quantity/dimension-words.js';
 import { formatQuantity, formatShare } from '../quantity/format-quantity.js';

@@ -1,4 +1,4 @@
-import type { z } from 'zod';
+import type * as z from '../libraries/zod.js';
 
 type Camel<S extends string> = S extends `${infer Head}-${infer Tail}`
   ? `${Head}${Capitalize<Camel<Tail>>}`

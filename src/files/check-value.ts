@@ -1,4 +1,4 @@
-import type { z } from 'zod';
+import type * as z from '../libraries/zod.js';
 import { nearest } from '../quantity/nearest.js';
 import { plainWords } from './plain-words.js';
 import type { Complaint } from './yaml-document.js';

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { QuantityError, readQuantityOrAnyShare } from '../quantity/parse-quantity.js';
 import type { Dimension } from '../quantity/quantity.js';
 import { shown } from '../quantity/shown-text.js';

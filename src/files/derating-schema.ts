@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import { choice, quantity } from './building-blocks.js';
 import { camelKeys } from './camel-keys.js';

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { readQuantity } from '../quantity/parse-quantity.js';
 import { QuantityError } from '../quantity/quantity-error.js';
 import type { Dimension } from '../quantity/quantity.js';

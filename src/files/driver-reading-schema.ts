@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { product, shifted } from '../quantity/decimal-text.js';
 import { QuantityError, readQuantity } from '../quantity/parse-quantity.js';
 import type { Dimension } from '../quantity/quantity.js';

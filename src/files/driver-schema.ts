@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { choice, count, line, name, quantity } from './building-blocks.js';
 import { camelKeys, withoutHeader } from './camel-keys.js';
 import { driverProblems } from './driver-checks.js';

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { choice, count, quantity } from './building-blocks.js';
 import { camelKeys } from './camel-keys.js';
 import { fastestLine, slowestLine } from './connection-address.js';

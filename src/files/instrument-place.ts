@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { count, line, readFromText } from './building-blocks.js';
 import type { ReplayAddress } from './bench.js';
 import { addressForms, AddressError, parseAddress } from './connection-address.js';

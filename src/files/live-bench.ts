@@ -1,4 +1,4 @@
-import { type Document, isAlias, parseDocument } from 'yaml';
+import { type Document, isAlias, parseDocument } from '../libraries/yaml.js';
 import { placeOf, type Post } from './bench.js';
 
 /**

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { choice, line, name, quantity, quantityOrWord } from './building-blocks.js';
 import { withoutHeader } from './camel-keys.js';
 import { headers } from './file-kind.js';

@@ -1,4 +1,4 @@
-import { isMap, isScalar, isSeq, parseDocument, type YAMLMap } from 'yaml';
+import { isMap, isScalar, isSeq, parseDocument, type YAMLMap } from '../libraries/yaml.js';
 import { formatShare } from '../quantity/format-quantity.js';
 import { headers } from './file-kind.js';
 import type { Criterion, Procedure } from './procedure.js';

@@ -1,4 +1,4 @@
-import type { z } from 'zod';
+import type * as z from '../libraries/zod.js';
 import { shown } from '../quantity/shown-text.js';
 import { didYouMean } from '../quantity/nearest.js';
 

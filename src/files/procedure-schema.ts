@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { choice, line, name, paragraph, quantity, quantityOrNameplateShare } from './building-blocks.js';
 import { deratingSchema } from './derating-schema.js';
 import { headers } from './file-kind.js';

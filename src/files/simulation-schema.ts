@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { choice, count, line, name, quantity, quantityOrWord } from './building-blocks.js';
 import { camelKeys } from './camel-keys.js';
 import { formatQuantity } from '../quantity/format-quantity.js';

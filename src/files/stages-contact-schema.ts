@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { exactlyOne } from './alternatives.js';
 import { quantity } from './building-blocks.js';
 import { found } from './plain-words.js';

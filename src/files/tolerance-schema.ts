@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { line, name } from './building-blocks.js';
 import { headers } from './file-kind.js';
 

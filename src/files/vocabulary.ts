@@ -1,4 +1,4 @@
-import type { z } from 'zod';
+import type * as z from '../libraries/zod.js';
 import { ofNameOrFamily } from '../quantity/name-family.js';
 import { didYouMean } from '../quantity/nearest.js';
 import type { Dimension } from '../quantity/quantity.js';

@@ -1,4 +1,4 @@
-import { isAlias, isCollection, isNode, isPair, isScalar, visit, type Document, type Node } from 'yaml';
+import { isAlias, isCollection, isNode, isPair, isScalar, visit, type Document, type Node } from '../libraries/yaml.js';
 import { shown } from '../quantity/shown-text.js';
 import type { TextProblem } from './yaml-syntax.js';
 

@@ -1,4 +1,4 @@
-import type { Document } from 'yaml';
+import type { Document } from '../libraries/yaml.js';
 
 /** Something wrong with the text itself, at an offset in it. */
 export interface TextProblem {

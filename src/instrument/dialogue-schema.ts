@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { dialogueFormat } from './dialogue-record.js';
 
 const t = z.number().describe('Seconds: those of the dialogue, or of the run that it is part of.');

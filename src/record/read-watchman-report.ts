@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { readWhole } from './read-whole.js';
 import type { RunFolder } from './run-folder.js';
 import { watchmanFormat, type WatchmanReport } from './watchman-report.js';

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { baselineSchema } from './baseline.js';
 
 /**

@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
 import { existsSync } from 'node:fs';
 import { join } from 'node:path';
-import type { z } from 'zod';
+import type * as z from '../libraries/zod.js';
 import { OddFileError, readWhole } from './read-whole.js';
 import { BadRecordError, NoRecordError } from './record-error.js';
 import { headerSchema } from './run-header-schema.js';

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { answersFormat, type RecordedAnswer } from './answers-record.js';
 
 const t = z.number().describe('Seconds since the run began.');

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { WrongPlaceError } from '../bench/wrong-place-error.js';
 import { earthFound, type EarthLimits } from '../circuit/earth-found.js';
 import type { OhmReadings } from '../circuit/ohm-readings.js';

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { count, quantity, quantityOrShare } from '../files/building-blocks.js';
 import { formatShare } from '../quantity/format-quantity.js';
 import type { Amperes, QuantityOrShare, Seconds } from '../quantity/quantity.js';

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { choice, line } from '../files/building-blocks.js';
 import { dimensions, type Dimension } from '../quantity/quantity.js';
 import { parseQuantity } from '../quantity/parse-quantity.js';

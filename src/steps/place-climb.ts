@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import type { Clock } from '../clock/clock.js';
 import { count, quantity } from '../files/building-blocks.js';
 import type { Amperes, Ratio, Seconds } from '../quantity/quantity.js';

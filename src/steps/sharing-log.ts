@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import { quantity, quantityOrShare } from '../files/building-blocks.js';
 import { formatQuantity, formatShare } from '../quantity/format-quantity.js';
 import type { Seconds } from '../quantity/quantity.js';

@@ -1,4 +1,4 @@
-import type { z } from 'zod';
+import type * as z from '../libraries/zod.js';
 import type { OpenBench } from '../bench/open-bench.js';
 import type { GuardLimits, Guards } from '../bench/guards.js';
 import type { EarthRelation } from '../circuit/earth-relation.js';

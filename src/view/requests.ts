@@ -1,5 +1,5 @@
 import type { IncomingMessage, ServerResponse } from 'node:http';
-import { z } from 'zod';
+import * as z from '../libraries/zod.js';
 import type { Audience } from './audience.js';
 import type { Entry } from './entry.js';
 import type { PageFile, PageFiles } from './page-files.js';

@@ -52,3 +52,9 @@ it('checking a module loads nothing of steps, findings, instruments or records',
     scripts.filter((url) => /\/dist\/(steps|analysis|instrument|bench|record|circuit)\//.test(url)),
   ).toEqual([]);
 });
+
+it('checking a module opens one file for each library, not the hundred that it has', async () => {
+  const scripts = await loadedBy('check', 'fixtures/modules/K1.yaml');
+  expect(scripts.filter((url) => /\/dist\/libraries\//.test(url)).length).toBe(2);
+  expect(scripts.filter((url) => /\/node_modules\/(zod|yaml)\//.test(url))).toEqual([]);
+});

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../../libraries/zod.js';
 import type { AsWritten } from '../../report/schema/as-written.js';
 
 export const role = z.enum(['load', 'meter', 'scanner', 'thermometer', 'source']);

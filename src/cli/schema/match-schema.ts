@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../../libraries/zod.js';
 import type { AsWritten } from '../../report/schema/as-written.js';
 import { role } from './drivers-schema.js';
 

@@ -1,4 +1,4 @@
-import type { z } from 'zod';
+import type * as z from '../../libraries/zod.js';
 
 /**
  * What a writer of JSON hands over: the type that the schema of the format stands for, nothing of it to be changed.

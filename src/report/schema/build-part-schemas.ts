@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../../libraries/zod.js';
 import type { AsWritten } from './as-written.js';
 import { bound, intervalKeys, unit, valueSchema } from './number-schemas.js';
 

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../../libraries/zod.js';
 import { comparisonFormat } from '../comparison-json.js';
 import type { AsWritten } from './as-written.js';
 import { endedKeys, integritySchema, outcomeOrNone, outcomeSchema, probability } from './ended-schemas.js';

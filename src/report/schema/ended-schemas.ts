@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../../libraries/zod.js';
 
 /** How a run ended, and how far its record is to be believed; of a result, and of both sides of a comparison. */
 export const endedKeys = {

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../../libraries/zod.js';
 import { watchmanReportSchema } from '../../record/read-watchman-report.js';
 import { resultFormat } from '../json.js';
 import type { AsWritten } from './as-written.js';

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../../libraries/zod.js';
 import { selectionFormat } from '../build/selection-json.js';
 import type { AsWritten } from './as-written.js';
 import { ballastWishSchema } from './ballast-wish-schema.js';

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from '../../libraries/zod.js';
 import { sequences } from '../../arrangement/stages-wish.js';
 import { stagedSupplyFormat } from '../build/staged-supply-json.js';
 import type { AsWritten } from './as-written.js';
