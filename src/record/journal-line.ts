@@ -1,20 +1,20 @@
 import { dimensions } from '../quantity/quantity.js';
 import { type JournalEvent, journalFormat, mustBeSealed, phases, type TimedEvent } from './journal-event.js';
-import { isSealed } from './seal.js';
+import { endsInSeal } from './seal.js';
 
 /**
  * The event that a line of a journal holds; undefined when it holds none: not JSON, an unknown event, a
  * field of the wrong kind, a seal that is missing where there must be one. The first line, and no other,
  * is `opened`. By hand, not by a schema: there may be millions of these lines.
  */
-export function parseLine(line: Buffer, first: boolean): TimedEvent | undefined {
-  const event = parseJson(line.toString('utf8'));
+export function parseLine(line: string, first: boolean): TimedEvent | undefined {
+  const event = parseJson(line);
   if (typeof event !== 'object' || event === null || Array.isArray(event)) return undefined;
   const fields = event as Readonly<Record<string, unknown>>;
   const { event: name, t } = fields;
   const shape = typeof name === 'string' ? shapes.get(name) : undefined;
   if (shape === undefined || !isNumber(t) || first !== (name === 'opened')) return undefined;
-  if (needsSeal(fields) && !isSealed(line)) return undefined;
+  if (needsSeal(fields) && !endsInSeal(line)) return undefined;
   for (const [field, fits] of shape) {
     if (!fits(fields[field])) return undefined;
   }

@@ -2,7 +2,8 @@ import { writeFileSync } from 'node:fs';
 import { plainDecimal } from '../quantity/decimal-text.js';
 import { csvText, textCell } from './csv.js';
 import type { PointBegan, PointEnded, ReadingTaken, TimedEvent } from './journal-event.js';
-import { checkJournal, readJournal } from './journal-reader.js';
+import { checkJournal } from './journal-check.js';
+import { readJournal } from './journal-reader.js';
 import { replaceFileBy, type RunFolder } from './run-folder.js';
 
 const columns = [

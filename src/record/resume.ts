@@ -1,6 +1,7 @@
 import type { Seconds } from '../quantity/quantity.js';
 import type { Carried, Ended, Resumed, StepBegan, StepEnded, TimedEvent } from './journal-event.js';
-import { checkJournal, type Integrity, otherHeader, readJournal } from './journal-reader.js';
+import { checkJournal, type Integrity, otherHeader } from './journal-check.js';
+import { readJournal } from './journal-reader.js';
 import { BadRecordError } from './record-error.js';
 import { NotResumableError } from './resume-error.js';
 import { type RunFolder, runFolderAt } from './run-folder.js';

@@ -8,6 +8,7 @@ const opening = ',"seal":"';
 const closing = '"}';
 export const sealLength = opening.length + 64 + closing.length;
 const openingBytes = Buffer.from(opening);
+const sealAtEnd = /^.,"seal":"[0-9a-f]{64}"\}$/s;
 
 export function newSealer(): Hash {
   return createHash('sha256');
@@ -19,10 +20,15 @@ export function sealLine(before: Hash, line: string): string {
   return `${line.slice(0, -1)}${opening}${seal}${closing}`;
 }
 
-/** Whether the bytes of a line end in a seal. */
-export function isSealed(line: Buffer): boolean {
-  const start = line.length - sealLength;
-  return start > 0 && line.subarray(start, start + openingBytes.length).equals(openingBytes);
+/** Whether a line among these bytes, from `start` to `end`, ends in a seal. */
+export function isSealed(bytes: Buffer, start = 0, end = bytes.length): boolean {
+  const from = end - sealLength;
+  return from > start && openingBytes.every((byte, index) => bytes[from + index] === byte);
+}
+
+/** Whether the text of a line ends in a seal. */
+export function endsInSeal(line: string): boolean {
+  return sealAtEnd.test(line.slice(-sealLength - 1));
 }
 
 /** Whether the seal of a sealed line agrees with all that went before. */

@@ -1,4 +1,4 @@
-import type { Integrity } from '../record/journal-reader.js';
+import type { Integrity } from '../record/journal-check.js';
 
 /** Never 100 % and never 0 %: nothing measured is that sure. */
 export function probabilityInWords(probability: number): string {

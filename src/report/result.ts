@@ -1,7 +1,7 @@
 import type { Evidence } from '../analysis/evidence.js';
 import type { Finding } from '../analysis/finding.js';
 import type { Decision, Outcome } from '../judgement/judge.js';
-import type { Integrity } from '../record/journal-reader.js';
+import type { Integrity } from '../record/journal-check.js';
 import type { RunHeader } from '../record/run-header.js';
 import type { WatchmanReport } from '../record/watchman-report.js';
 

@@ -1,7 +1,8 @@
 import { analyse } from '../analysis/analyse.js';
 import { type Evidence, EvidenceCollector } from '../analysis/evidence.js';
 import { type Decision, judge, overall } from '../judgement/judge.js';
-import { checkJournal, type Integrity, otherHeader, readJournal } from '../record/journal-reader.js';
+import { checkJournal, type Integrity, otherHeader } from '../record/journal-check.js';
+import { readJournal } from '../record/journal-reader.js';
 import { sealOf } from '../record/journal-line.js';
 import { readWatchmanReport } from '../record/read-watchman-report.js';
 import { runFolderAt } from '../record/run-folder.js';

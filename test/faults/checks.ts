@@ -1,6 +1,7 @@
 import type { ExpectStatic } from 'vitest';
 import type { TimedEvent } from '../../src/record/journal-event.js';
-import { checkJournal, readJournal } from '../../src/record/journal-reader.js';
+import { checkJournal } from '../../src/record/journal-check.js';
+import { readJournal } from '../../src/record/journal-reader.js';
 import type { Cell, Given } from './cell.js';
 import type { FaultName } from './faults.js';
 import { type Moment, scenes } from './moments.js';

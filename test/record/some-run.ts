@@ -3,7 +3,8 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll } from 'vitest';
 import { type JournalEvent, journalFormat, phases, type TimedEvent } from '../../src/record/journal-event.js';
-import { checkJournal, type Integrity, readJournal } from '../../src/record/journal-reader.js';
+import { checkJournal, type Integrity } from '../../src/record/journal-check.js';
+import { readJournal } from '../../src/record/journal-reader.js';
 import { JournalWriter } from '../../src/record/journal-writer.js';
 import fc from '../property.js';
 

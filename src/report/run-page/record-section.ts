@@ -1,4 +1,4 @@
-import type { Integrity } from '../../record/journal-reader.js';
+import type { Integrity } from '../../record/journal-check.js';
 import { capitalised } from '../../quantity/capitalised.js';
 import { element, type Markup } from '../page/markup.js';
 import { section } from '../page/page.js';

@@ -21,10 +21,7 @@ export default (async () => [
 ]) satisfies Benchmark;
 
 /** From the file to the findings, seals and all, against a program that only reads the lines of the same file. */
-async function analysed(
-  whose: string,
-  write: (folder: string, readings: number) => number,
-): Promise<Figure> {
+async function analysed(whose: string, write: (folder: string, readings: number) => number): Promise<Figure> {
   const folder = mkdtempSync(join(tmpdir(), 'railproof-speed-'));
   try {
     const { run, readings } = written(folder, wanted, write);
@@ -34,7 +31,10 @@ async function analysed(
       rival: () => parsedInChunks(journal),
       rounds,
     });
-    const byReadline = median([await secondsOf(() => parsedByReadline(journal)), await secondsOf(() => parsedByReadline(journal))]);
+    const byReadline = median([
+      await secondsOf(() => parsedByReadline(journal)),
+      await secondsOf(() => parsedByReadline(journal)),
+    ]);
     const grown: Record<string, number> = {};
     for (const count of shorter) {
       const short = written(folder, count, write);

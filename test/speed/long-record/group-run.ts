@@ -73,7 +73,10 @@ export function writeGroupRun(folder: string, readings: number): number {
   look('proof', 2.4);
   for (const { name } of modules) {
     run.input('off');
-    asked(`Pull the mains plug (or the input) of ${name}, and only of ${name}. Nothing else is touched.`, `unplug ${name}`);
+    asked(
+      `Pull the mains plug (or the input) of ${name}, and only of ${name}. Nothing else is touched.`,
+      `unplug ${name}`,
+    );
     run.input('on');
     look('proof', 2.4, name);
     run.input('off');

@@ -39,7 +39,10 @@ export function writeModuleRun(folder: string, readings: number): number {
   /** It hiccups: mostly nothing, now and then an attempt. */
   const overloaded = () => (random.uniform(0, 1) < 0.2 ? loaded(limit, 0.95) : loaded(0, 0));
   const warm = (current: number, temperature: number) => (): readonly Read[] => {
-    const [meter, ...load] = loaded(current, openCircuit - droop * current - 0.0003 * (temperature - ambient));
+    const [meter, ...load] = loaded(
+      current,
+      openCircuit - droop * current - 0.0003 * (temperature - ambient),
+    );
     const read = shown(temperature + 0.05 * random.normal(), 1);
     return [...(meter ? [meter] : []), { of: 'thermometer', what: 'temperature', value: read }, ...load];
   };
@@ -50,7 +53,13 @@ export function writeModuleRun(folder: string, readings: number): number {
   const tried = (phase: 'climb' | 'halve' | 'return', current: number): boolean => {
     const holds = current <= limit;
     const outcome = holds ? 'held' : 'dropped';
-    run.point({ phase, current, outcome, samples: settings.readings, read: holds ? at(current) : overloaded });
+    run.point({
+      phase,
+      current,
+      outcome,
+      samples: settings.readings,
+      read: holds ? at(current) : overloaded,
+    });
     if (holds) return true;
     recovered();
     run.input('on');
@@ -145,12 +154,27 @@ function header(points: number, times: number): RunHeader {
       {
         kind: 'load-ramp',
         summary: `${points} points from 0 A to 100 % of rated-current and back`,
-        settings: { from: quantity(0), to: shareOfRated(1), points, dwell: 0.5, readings, sag: 0.2, back: true },
+        settings: {
+          from: quantity(0),
+          to: shareOfRated(1),
+          points,
+          dwell: 0.5,
+          readings,
+          sag: 0.2,
+          back: true,
+        },
       },
       {
         kind: 'dropout-search',
         summary: 'from 100 % of rated-current up to 200 % of rated-current, to within 10 mA',
-        settings: { from: shareOfRated(1), ceiling: shareOfRated(2), resolution, sag: 0.05, climb: 10, readings },
+        settings: {
+          from: shareOfRated(1),
+          ceiling: shareOfRated(2),
+          resolution,
+          sag: 0.05,
+          climb: 10,
+          readings,
+        },
       },
       {
         kind: 'recovery-check',
@@ -160,7 +184,14 @@ function header(points: number, times: number): RunHeader {
       {
         kind: 'soak',
         summary: '100 % of rated-current until settled, 7 d at most',
-        settings: { current: shareOfRated(1), for: 604_800, every, readings: soaked, 'settled-within': 0.001, over: 600 },
+        settings: {
+          current: shareOfRated(1),
+          for: 604_800,
+          every,
+          readings: soaked,
+          'settled-within': 0.001,
+          over: 600,
+        },
       },
     ],
   };
