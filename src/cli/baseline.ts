@@ -5,7 +5,8 @@ import type { Tolerance } from '../files/tolerance.js';
 import type { Baseline } from '../record/baseline.js';
 import type { Result } from '../report/result.js';
 import { understand } from '../report/understand.js';
-import { shipped, vocabulary } from './wiring.js';
+import { shipped } from './shipped.js';
+import { vocabulary } from './vocabulary.js';
 
 /** An earlier record, understood, and what its findings are compared by. */
 export interface LoadedBaseline {

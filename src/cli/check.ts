@@ -1,5 +1,6 @@
+import { dirname } from 'node:path';
 import { exitCodes, type ExitCode, RailproofError } from '../errors/railproof-error.js';
-import { type AnyFile, readAnyFile } from '../files/read-any-file.js';
+import { type AnyFile, readAnyFile, type WordsLoaded } from '../files/read-any-file.js';
 import type { FileRead } from '../files/read-text.js';
 import { printable } from '../quantity/printable.js';
 import { errorText } from './error-text.js';
@@ -15,7 +16,7 @@ export async function check(files: readonly string[], streams: Streams): Promise
   let status: ExitCode = exitCodes.conforms;
   for (const path of files) {
     try {
-      const file = await readAnyFile(path, async () => (await import('./wiring.js')).vocabulary);
+      const file = await readAnyFile(path, words);
       const also = await checkTogether(file);
       say(streams.stdout, `${printable(path)}: a ${file.value.kind} file, and right${also}`, { hang: '  ' });
     } catch (error) {
@@ -27,6 +28,14 @@ export async function check(files: readonly string[], streams: Streams): Promise
   return status;
 }
 
+const words: WordsLoaded = {
+  vocabulary: async () => (await import('./vocabulary.js')).vocabulary,
+  findings: async () => {
+    const { findingNames, findingWords } = await import('../analysis/finding-names.js');
+    return { findings: findingNames, words: findingWords };
+  },
+};
+
 /** What a file is checked together with, and a few words about it; what that needs is loaded when it is met. */
 async function checkTogether(file: FileRead<AnyFile>): Promise<string> {
   const { kind, content } = file.value;
@@ -36,20 +45,25 @@ async function checkTogether(file: FileRead<AnyFile>): Promise<string> {
     return exchanges === 0 ? '' : `; ${counted(exchanges)} of its dialogue too`;
   }
   if (kind === 'stages') {
-    const { recordsOf } = await import('./stage-records.js');
-    const { readStages } = await import('../files/read-stages.js');
-    const records = recordsOf((await readStages(file.path)).value.modules);
+    const [{ recordsOf }, { besideStages }] = await Promise.all([
+      import('./stage-records.js'),
+      import('../files/read-stages.js'),
+    ]);
+    const records = recordsOf(besideStages(content, dirname(file.path)).modules);
     return `; the ${records.length} records of its modules are there too`;
   }
   if (kind === 'bench') {
-    const { parseDriver } = await import('../files/read-driver.js');
-    const { checkDialogueOf } = await import('./check-dialogue.js');
-    const { readBenchDrivers } = await import('./wiring.js');
-    const drivers = await readBenchDrivers({ ...file, value: content });
-    for (const driver of new Map(drivers.map(({ file: each }) => [each.path, each])).values()) {
-      // As its file has it: the bench's is that of one channel, and a dialogue may speak of any.
-      checkDialogueOf({ ...driver, value: parseDriver(driver.text, driver.path) });
-    }
+    const [{ readNamedDrivers }, { driversOfChannels }, { checkDialogueOf }] = await Promise.all([
+      import('./bench-drivers.js'),
+      import('../files/bench-channels.js'),
+      import('./check-dialogue.js'),
+    ]);
+    const bench = { ...file, value: content };
+    const drivers = await readNamedDrivers(bench);
+    driversOfChannels(bench, drivers);
+    // As its file has it: the bench's is that of one channel, and a dialogue may speak of any.
+    for (const driver of new Map(drivers.map(({ file: each }) => [each.path, each])).values())
+      checkDialogueOf(driver);
   }
   return '';
 }

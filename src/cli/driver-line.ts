@@ -3,7 +3,7 @@ import type { Driver } from '../files/driver.js';
 import type { FileRead } from '../files/read-text.js';
 import { parseYaml } from '../files/yaml-document.js';
 import { type DriverPart, pathOf } from '../instrument/driver-part.js';
-import { recordedPath } from './wiring.js';
+import { recordedPath } from './shipped.js';
 
 /** What an instrument would not take, or what was not understood of it, and the line of the driver that is behind it. */
 export class AtDriverLineError extends RailproofError {

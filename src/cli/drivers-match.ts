@@ -16,7 +16,7 @@ import type { MatchJson } from './schema/match-schema.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
 import { whenAborted } from './when-aborted.js';
-import { shelves, shipped } from './wiring.js';
+import { shelves, shipped } from './shipped.js';
 
 /** `railproof drivers --match`: which of the shipped families an instrument belongs to, by harmless questions. */
 export async function matchOut(

@@ -21,7 +21,7 @@ import { countLine, meetingText, paceText, resultText, trialAsJson } from './tri
 import { TrialUsageError } from './trial-usage.js';
 import { trialFiles, writeAdapted, writeDialogue } from './trial-written.js';
 import { whenAborted } from './when-aborted.js';
-import { shelves } from './wiring.js';
+import { shelves } from './shipped.js';
 
 export interface TryWanted {
   readonly driver: string;

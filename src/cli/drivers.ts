@@ -7,7 +7,7 @@ import { jsonText } from '../report/json-text.js';
 import type { DriversJson } from './schema/drivers-schema.js';
 import type { Streams } from './streams.js';
 import { TrialUsageError } from './trial-usage.js';
-import { shelves, shipped } from './wiring.js';
+import { shelves, shipped } from './shipped.js';
 
 export interface DriversOptions {
   readonly try?: string;

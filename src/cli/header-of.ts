@@ -1,10 +1,11 @@
+import { createHash } from 'node:crypto';
 import type { OpenBench } from '../bench/open-bench.js';
 import type { FileRead } from '../files/read-text.js';
 import { headerFormat, type RunHeader } from '../record/run-header.js';
 import type { Plan } from '../run/plan.js';
 import type { LoadedPlan } from './load-plan.js';
 import { packageFacts } from './package-facts.js';
-import { recordedPath } from './wiring.js';
+import { recordedPath } from './shipped.js';
 
 /** What a record says of its run before the run begins: all that anyone who reads it later must know. */
 export function headerOf({ plan, files, baseline }: LoadedPlan, bench: OpenBench, began: Date): RunHeader {
@@ -64,6 +65,7 @@ export function stepsOf({ steps }: Plan): RunHeader['steps'] {
   }));
 }
 
-function fileOf(kind: string, { path, sha256, text }: FileRead<unknown>): RunHeader['files'][number] {
+function fileOf(kind: string, { path, text }: FileRead<unknown>): RunHeader['files'][number] {
+  const sha256 = createHash('sha256').update(text).digest('hex');
   return { kind, path: recordedPath(path), sha256, text };
 }

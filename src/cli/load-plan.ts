@@ -10,7 +10,9 @@ import { makePlan, type Plan } from '../run/plan.js';
 import { stepKinds } from '../steps/index.js';
 import { defaultTolerance, loadBaseline, type LoadedBaseline, NoBaselineError } from './baseline.js';
 import type { Resumption } from './resume-plan.js';
-import { planDrivers, readBenchDrivers, shipped, type DriverFiles, vocabulary } from './wiring.js';
+import { planDrivers, readBenchDrivers, type DriverFiles } from './bench-drivers.js';
+import { shipped } from './shipped.js';
+import { vocabulary } from './vocabulary.js';
 
 export interface PlanFiles {
   readonly procedure: FileRead<Procedure>;

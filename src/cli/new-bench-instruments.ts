@@ -11,7 +11,7 @@ import { readBy } from './answer-readers.js';
 import { meetInstrument } from './meet-instrument.js';
 import { makesNoSense, remarkOn, sayLacking, sayMet, wireLacking } from './new-bench-met.js';
 import { type Option, type Questions, UnfitAnswerError } from './questions.js';
-import { shipped } from './wiring.js';
+import { shipped } from './shipped.js';
 
 type Part = keyof NewBench['instruments'];
 

@@ -9,7 +9,8 @@ import { findingDimension } from '../files/vocabulary.js';
 import { readBy } from './answer-readers.js';
 import { type CriterionQuestion, purposes, type Purpose } from './new-procedure-purposes.js';
 import { type Questions, UnfitAnswerError } from './questions.js';
-import { shipped, vocabulary } from './wiring.js';
+import { shipped } from './shipped.js';
+import { vocabulary } from './vocabulary.js';
 
 export interface AskedProcedure {
   readonly name: string;

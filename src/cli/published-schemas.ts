@@ -18,7 +18,7 @@ import { planSchema } from './schema/plan-schema.js';
 import { portsSchema } from './schema/ports-schema.js';
 import { runsSchema } from './schema/runs-schema.js';
 import { trialSchema } from './schema/trial-schema.js';
-import { vocabulary } from './wiring.js';
+import { vocabulary } from './vocabulary.js';
 
 /** What the program writes as JSON, by the word that stands in its `format`: `railproof/run 1` is `run`. */
 const written = {

@@ -22,7 +22,8 @@ import { stepsOf } from './header-of.js';
 import type { LoadedPlan } from './load-plan.js';
 import { requireSameBench } from './resume-bench.js';
 import { standingFor } from './resume-shown.js';
-import { type DriverFiles, planDrivers, vocabulary } from './wiring.js';
+import { type DriverFiles, planDrivers } from './bench-drivers.js';
+import { vocabulary } from './vocabulary.js';
 
 /** What a run that goes on takes over. */
 export interface Resumption {
@@ -141,7 +142,7 @@ class RecordedTexts {
       .map(({ path, sha256, text }) => {
         if (createHash('sha256').update(text).digest('hex') !== sha256)
           throw new BadRecordError(this.path, `the text of ${path} is not the one that was read then`);
-        return { value: parse(text, `${this.path}: ${path}`, path), text, path, sha256 };
+        return { value: parse(text, `${this.path}: ${path}`, path), text, path };
       });
   }
 

@@ -17,7 +17,8 @@ import { say } from './say.js';
 import { stopOnSignals } from './stop-signals.js';
 import type { Streams } from './streams.js';
 import { whenAborted } from './when-aborted.js';
-import { type DriverFiles, planDrivers, readBenchDrivers, type World, worldOf } from './wiring.js';
+import { type DriverFiles, planDrivers, readBenchDrivers } from './bench-drivers.js';
+import { type World, worldOf } from './wiring.js';
 
 /**
  * `railproof safe`: the load of a bench off, and read back; then its source, where it has one. Unless that is

@@ -8,7 +8,7 @@ import { type ServedBench, serveBench } from '../simulation/serve.js';
 import { errorText } from './error-text.js';
 import { say } from './say.js';
 import type { Streams } from './streams.js';
-import { planDrivers, readBenchDrivers } from './wiring.js';
+import { planDrivers, readBenchDrivers } from './bench-drivers.js';
 
 /**
  * `railproof simulate`: serves the instruments of a simulated bench until it is told to stop. What it

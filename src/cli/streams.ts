@@ -27,21 +27,28 @@ export class OutputLostError extends RailproofError {
 const readerLeft: ReadonlySet<string | undefined> = new Set(['EPIPE', 'EIO', 'ERR_STREAM_DESTROYED']);
 
 /**
- * The streams of this process, and what became of the output. A reader that goes away must not end a run that
- * is not yet safe.
+ * The streams of this process, each opened when it is asked for, and what became of the output. A reader that goes
+ * away must not end a run that is not yet safe.
  */
 export function processStreams(): Streams & { readonly lost: () => Promise<OutputLostError | undefined> } {
   let lost: OutputLostError | undefined;
-  process.stderr.on('error', () => undefined);
-  process.stdin.on('error', () => undefined);
-  process.once('exit', letGoOfLostTerminal);
+  const stdin = quietly(() => process.stdin);
+  const stderr = quietly(() => process.stderr);
+  const terminals = [0, 1, 2].filter((fd) => isatty(fd));
+  process.once('exit', () => {
+    letGoOfLost(terminals);
+  });
   process.stdout.on('error', (error: NodeJS.ErrnoException) => {
     if (!readerLeft.has(error.code)) lost ??= new OutputLostError(error);
   });
   return {
-    stdin: process.stdin,
+    get stdin() {
+      return stdin();
+    },
     stdout: process.stdout,
-    stderr: process.stderr,
+    get stderr() {
+      return stderr();
+    },
     environment: process.env,
     lost: async () => {
       // Errors of a stream come a turn after the write.
@@ -51,13 +58,19 @@ export function processStreams(): Streams & { readonly lost: () => Promise<Outpu
   };
 }
 
+/** A stream whose errors are let pass from when it is first asked for: Node opens it then. */
+function quietly<Stream extends NodeJS.EventEmitter>(open: () => Stream): () => Stream {
+  let opened: Stream | undefined;
+  return () => (opened ??= open().on('error', () => undefined));
+}
+
 /**
  * As it leaves, Node gives a terminal its settings back, and aborts where that terminal is gone: the exit status
  * would be lost. So whatever still points there is pointed nowhere first.
  */
-function letGoOfLostTerminal(): void {
-  for (const { fd, isTTY } of [process.stdin, process.stdout, process.stderr]) {
-    if (!isTTY || isatty(fd)) continue;
+function letGoOfLost(terminals: readonly number[]): void {
+  for (const fd of terminals) {
+    if (isatty(fd)) continue;
     closeSync(fd);
     // The lowest number that is free is the one that was just closed.
     openSync('/dev/null', 'r+');

@@ -12,7 +12,14 @@ import { parseYaml, type Complaint, type YamlDocument } from './yaml-document.js
  * @throws BadFileError with all its problems.
  */
 export function parseFile<T>(kind: FileKind, schema: z.ZodType<T>, text: string, fileName: string): T {
-  const document = openDocument(kind, text, fileName);
+  return contentOf(kind, schema, openDocument(kind, text, fileName));
+}
+
+/**
+ * What a document holds that is wholly described by a schema, and whose first line was looked at.
+ * @throws BadFileError with all its problems.
+ */
+export function contentOf<T>(kind: FileKind, schema: z.ZodType<T>, document: YamlDocument): T {
   const checked = checkValue(schema, document.value);
   if (checked.kind === 'bad') throw badFile(kind, document, checked.complaints);
   return checked.value;
@@ -25,7 +32,7 @@ export function parseFile<T>(kind: FileKind, schema: z.ZodType<T>, text: string,
  */
 export function openDocument(kind: FileKind, text: string, fileName: string): YamlDocument {
   const document = parseYaml(text, fileName);
-  const itsKind = headerKind(document);
+  const itsKind = kindOf(document);
   if (itsKind !== kind) {
     const message = `this is a ${itsKind} file; a ${kind} file is needed`;
     throw new BadFileError([document.place({ path: ['railproof'], message })], {
@@ -33,14 +40,6 @@ export function openDocument(kind: FileKind, text: string, fileName: string): Ya
     });
   }
   return document;
-}
-
-/**
- * What kind of file a text says it is, from its first line.
- * @throws BadFileError when it does not say, or names a kind or version that we do not know.
- */
-export function fileKindOf(text: string, fileName: string): FileKind {
-  return headerKind(parseYaml(text, fileName));
 }
 
 export function badFile(
@@ -55,7 +54,11 @@ export function badFile(
   );
 }
 
-function headerKind(document: YamlDocument): FileKind {
+/**
+ * What kind of file a document says it is, in its first line.
+ * @throws BadFileError when it does not say, or names a kind or version that we do not know.
+ */
+export function kindOf(document: YamlDocument): FileKind {
   const refuse = (message: string, path: readonly string[] = []): never => {
     throw new BadFileError([document.place({ path, message })], {
       advice:

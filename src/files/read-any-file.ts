@@ -1,12 +1,13 @@
 import type { Bench } from './bench.js';
 import type { Driver } from './driver.js';
-import { fileKindOf } from './parse-file.js';
 import type { Module } from './module.js';
+import { kindOf } from './parse-file.js';
 import type { Procedure } from './procedure.js';
 import { readAndParse, type FileRead } from './read-text.js';
 import type { Stages } from './stages.js';
 import type { Tolerance } from './tolerance.js';
-import type { Vocabulary } from './vocabulary.js';
+import type { FindingWords, Vocabulary } from './vocabulary.js';
+import { parseYaml } from './yaml-document.js';
 
 /** A user's file of whatever kind. */
 export type AnyFile =
@@ -17,38 +18,51 @@ export type AnyFile =
   | { readonly kind: 'tolerance'; readonly content: Tolerance }
   | { readonly kind: 'stages'; readonly content: Stages };
 
+/** Where the words of procedures and tolerances are had from, when they are needed. */
+export interface WordsLoaded {
+  readonly vocabulary: () => Promise<Vocabulary>;
+  readonly findings: () => Promise<FindingWords>;
+}
+
 /**
  * Reads a file as what its first line says it is. Only what that kind needs is loaded, the words of steps and findings
  * too: whoever checks a module waits for no schema of a procedure.
  * @throws BadFileError, MissingFileError
  */
-export function readAnyFile(path: string, vocabulary: () => Promise<Vocabulary>): Promise<FileRead<AnyFile>> {
+export function readAnyFile(path: string, words: WordsLoaded): Promise<FileRead<AnyFile>> {
   return readAndParse(path, async (text, fileName): Promise<AnyFile> => {
-    const kind = fileKindOf(text, fileName);
+    const document = parseYaml(text, fileName);
+    const kind = kindOf(document);
     switch (kind) {
       case 'module': {
-        const { parseModule } = await import('./read-module.js');
-        return { kind, content: parseModule(text, fileName) };
+        const { moduleIn } = await import('./read-module.js');
+        return { kind, content: moduleIn(document) };
       }
       case 'bench': {
-        const { parseBench } = await import('./read-bench.js');
-        return { kind, content: parseBench(text, fileName) };
+        const { benchIn } = await import('./read-bench.js');
+        return { kind, content: benchIn(document) };
       }
       case 'driver': {
-        const { parseDriver } = await import('./read-driver.js');
-        return { kind, content: parseDriver(text, fileName) };
+        const { driverIn } = await import('./read-driver.js');
+        return { kind, content: driverIn(document) };
       }
       case 'procedure': {
-        const { parseProcedure } = await import('./read-procedure.js');
-        return { kind, content: parseProcedure(text, fileName, await vocabulary()) };
+        const [{ procedureIn }, vocabulary] = await Promise.all([
+          import('./read-procedure.js'),
+          words.vocabulary(),
+        ]);
+        return { kind, content: procedureIn(document, vocabulary) };
       }
       case 'tolerance': {
-        const { parseTolerance } = await import('./read-tolerance.js');
-        return { kind, content: parseTolerance(text, fileName, await vocabulary()) };
+        const [{ toleranceIn }, findings] = await Promise.all([
+          import('./read-tolerance.js'),
+          words.findings(),
+        ]);
+        return { kind, content: toleranceIn(document, findings) };
       }
       case 'stages': {
-        const { parseStages } = await import('./read-stages.js');
-        return { kind, content: parseStages(text, fileName) };
+        const { stagesIn } = await import('./read-stages.js');
+        return { kind, content: stagesIn(document) };
       }
     }
   });

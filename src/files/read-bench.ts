@@ -1,12 +1,18 @@
 import { dirname, isAbsolute, join } from 'node:path';
 import type { Bench, InstrumentPlace, ReplayAddress } from './bench.js';
 import { benchSchema } from './bench-schema.js';
-import { parseFile } from './parse-file.js';
+import { contentOf, openDocument } from './parse-file.js';
 import { readAndParse, type FileRead } from './read-text.js';
+import type { YamlDocument } from './yaml-document.js';
 
 /** @throws BadFileError */
 export function parseBench(text: string, fileName: string): Bench {
-  return parseFile('bench', benchSchema, text, fileName);
+  return benchIn(openDocument('bench', text, fileName));
+}
+
+/** @throws BadFileError */
+export function benchIn(document: YamlDocument): Bench {
+  return contentOf('bench', benchSchema, document);
 }
 
 /**

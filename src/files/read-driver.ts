@@ -1,12 +1,18 @@
 import type { Driver } from './driver.js';
 import { driverSchema } from './driver-schema.js';
-import { parseFile } from './parse-file.js';
+import { contentOf, openDocument } from './parse-file.js';
 import { readAndParse, type FileRead } from './read-text.js';
 import { findShipped, type Shelves } from './shipped-file.js';
+import type { YamlDocument } from './yaml-document.js';
 
 /** @throws BadFileError */
 export function parseDriver(text: string, fileName: string): Driver {
-  return parseFile('driver', driverSchema, text, fileName);
+  return driverIn(openDocument('driver', text, fileName));
+}
+
+/** @throws BadFileError */
+export function driverIn(document: YamlDocument): Driver {
+  return contentOf('driver', driverSchema, document);
 }
 
 /**

@@ -1,11 +1,17 @@
 import type { Module } from './module.js';
 import { moduleSchema } from './module-schema.js';
-import { parseFile } from './parse-file.js';
+import { contentOf, openDocument } from './parse-file.js';
 import { readAndParse, type FileRead } from './read-text.js';
+import type { YamlDocument } from './yaml-document.js';
 
 /** @throws BadFileError */
 export function parseModule(text: string, fileName: string): Module {
-  return parseFile('module', moduleSchema, text, fileName);
+  return moduleIn(openDocument('module', text, fileName));
+}
+
+/** @throws BadFileError */
+export function moduleIn(document: YamlDocument): Module {
+  return contentOf('module', moduleSchema, document);
 }
 
 /** @throws BadFileError, MissingFileError */

@@ -18,7 +18,11 @@ import type { Complaint, YamlDocument } from './yaml-document.js';
  * @throws BadFileError with all problems of the file, those inside steps and criteria among them.
  */
 export function parseProcedure(text: string, fileName: string, vocabulary: Vocabulary): Procedure {
-  const document = openDocument('procedure', text, fileName);
+  return procedureIn(openDocument('procedure', text, fileName), vocabulary);
+}
+
+/** The same, of a document whose first line was looked at. */
+export function procedureIn(document: YamlDocument, vocabulary: Vocabulary): Procedure {
   const checked = checkValue(procedureSchema, document.value);
   const complaints: Complaint[] = checked.kind === 'bad' ? [...checked.complaints] : [];
 

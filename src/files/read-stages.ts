@@ -5,10 +5,15 @@ import { readAndParse, type FileRead } from './read-text.js';
 import { stagesProblems } from './stages-checks.js';
 import { stagesSchema } from './stages-schema.js';
 import type { Stages } from './stages.js';
+import type { YamlDocument } from './yaml-document.js';
 
 /** @throws BadFileError with all problems that can be told. */
 export function parseStages(text: string, fileName: string): Stages {
-  const document = openDocument('stages', text, fileName);
+  return stagesIn(openDocument('stages', text, fileName));
+}
+
+/** @throws BadFileError with all problems that can be told. */
+export function stagesIn(document: YamlDocument): Stages {
   const checked = checkValue(stagesSchema, document.value);
   if (checked.kind === 'bad') throw badFile('stages', document, checked.complaints);
   const complaints = [...stagesProblems(checked.value)];
@@ -21,10 +26,11 @@ export function parseStages(text: string, fileName: string): Stages {
  * @throws BadFileError, MissingFileError
  */
 export function readStages(path: string): Promise<FileRead<Stages>> {
-  return readAndParse(path, (text, fileName) => besideFile(parseStages(text, fileName), dirname(path)));
+  return readAndParse(path, (text, fileName) => besideStages(parseStages(text, fileName), dirname(path)));
 }
 
-function besideFile(stages: Stages, folder: string): Stages {
+/** The same stages, their records looked for from that folder on. */
+export function besideStages(stages: Stages, folder: string): Stages {
   return {
     ...stages,
     modules: stages.modules.map(({ name, records }) => ({

@@ -1,15 +1,12 @@
-import { createHash } from 'node:crypto';
 import { open } from 'node:fs/promises';
 import { BadFileError, MissingFileError } from './file-error.js';
 import { largestFile, tooLarge } from './file-size.js';
 
-/** What was read from a user's file: its meaning, and the text and hash that go into the record. */
+/** What was read from a user's file: its meaning, and the text, byte for byte, that goes into the record. */
 export interface FileRead<T> {
   readonly value: T;
   readonly text: string;
   readonly path: string;
-  /** Of the bytes of the file, in hexadecimal. */
-  readonly sha256: string;
 }
 
 /**
@@ -20,10 +17,8 @@ export async function readAndParse<T>(
   path: string,
   parse: (text: string, fileName: string) => T | Promise<T>,
 ): Promise<FileRead<T>> {
-  const bytes = await readBounded(path);
-  const text = decode(bytes, path);
-  const sha256 = createHash('sha256').update(bytes).digest('hex');
-  return { value: await parse(text, path), text, path, sha256 };
+  const text = decode(await readBounded(path), path);
+  return { value: await parse(text, path), text, path };
 }
 
 async function readBounded(path: string): Promise<Uint8Array> {

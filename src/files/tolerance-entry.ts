@@ -7,7 +7,7 @@ import { found } from './plain-words.js';
 import { errorDimension } from './reading-dimensions.js';
 import type { Allowed, Expected, ToleranceEntry } from './tolerance.js';
 import { toleranceEntrySchema } from './tolerance-schema.js';
-import { familyOrFindingDimension, readWord, type Vocabulary } from './vocabulary.js';
+import { familyOrFindingDimension, readWord, type FindingWords } from './vocabulary.js';
 import type { Complaint } from './yaml-document.js';
 
 const forms = ['within', 'same', 'becomes'] as const;
@@ -16,7 +16,7 @@ const forms = ['within', 'same', 'becomes'] as const;
 export function readToleranceEntry(
   value: unknown,
   path: readonly PropertyKey[],
-  vocabulary: Vocabulary,
+  vocabulary: FindingWords,
 ): ToleranceEntry | readonly Complaint[] {
   const checked = checkValue(toleranceEntrySchema, value, path);
   if (checked.kind === 'bad') return checked.complaints;
@@ -43,7 +43,7 @@ function readExpected(
     finding,
     dimension,
     vocabulary,
-  }: { finding: string; dimension: Dimension | 'word'; vocabulary: Vocabulary },
+  }: { finding: string; dimension: Dimension | 'word'; vocabulary: FindingWords },
 ): Expected | string {
   if (dimension !== 'word') {
     return form === 'within'

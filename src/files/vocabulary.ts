@@ -7,8 +7,12 @@ import { namePattern } from './name-pattern.js';
 import { found } from './plain-words.js';
 
 /** What procedures may speak of. It is handed in, since the step kinds and findings live in other rooms. */
-export interface Vocabulary {
+export interface Vocabulary extends FindingWords {
   readonly stepKinds: readonly StepKindWord[];
+}
+
+/** What tolerances may speak of. */
+export interface FindingWords {
   /** What each finding measures, or that it is a word. A name such as `share-of-*` stands for all that begin so. */
   readonly findings: Readonly<Record<string, Dimension | 'word'>>;
   /** What a finding that is a word can be, where that is known beforehand; by its name, or its family's. */
@@ -23,14 +27,14 @@ export interface StepKindWord {
 }
 
 /** What the finding measures, or undefined when there is none of that name; a whole family is none. */
-export function findingDimension(name: string, vocabulary: Vocabulary): Dimension | 'word' | undefined {
+export function findingDimension(name: string, vocabulary: FindingWords): Dimension | 'word' | undefined {
   return name.endsWith('*') ? undefined : ofNameOrFamily(name, vocabulary.findings);
 }
 
 /** The same, where a family such as `share-of-*` may be meant as a whole. */
 export function familyOrFindingDimension(
   name: string,
-  vocabulary: Vocabulary,
+  vocabulary: FindingWords,
 ): Dimension | 'word' | undefined {
   const { findings } = vocabulary;
   return Object.hasOwn(findings, name) ? findings[name] : findingDimension(name, vocabulary);
@@ -43,7 +47,7 @@ export function familyOrFindingDimension(
 export function readWord(
   value: unknown,
   finding: string,
-  { words }: Vocabulary,
+  { words }: FindingWords,
 ): { readonly word: string } | { readonly problem: string } {
   if (typeof value !== 'string' || !namePattern.test(value))
     return { problem: `${found(value)}; a word is needed` };

@@ -1,7 +1,7 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { driverLine, atDriverLine } from '../../src/cli/driver-line.js';
-import { shelves } from '../../src/cli/wiring.js';
+import { shelves } from '../../src/cli/shipped.js';
 import { readDriver } from '../../src/files/read-driver.js';
 import { InstrumentComplainedError } from '../../src/instrument/instrument-errors.js';
 import { lastLine, loadAtSocket, railproof } from './at-a-socket.js';

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import type { Met } from '../../src/cli/meet-instrument.js';
 import { remarkOn, sayLacking, sayMet, wireLacking } from '../../src/cli/new-bench-met.js';
 import type { Questions } from '../../src/cli/questions.js';
-import { shelves } from '../../src/cli/wiring.js';
+import { shelves } from '../../src/cli/shipped.js';
 import { parseAddress } from '../../src/files/connection-address.js';
 import { readDriver } from '../../src/files/read-driver.js';
 import { firstWords } from '../../src/instrument/first-words.js';

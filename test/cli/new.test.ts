@@ -14,7 +14,7 @@ import { describe, expect, it, onTestFinished } from 'vitest';
 import { main } from '../../src/cli/program.js';
 import { purposes } from '../../src/cli/new-procedure-purposes.js';
 import type { Streams } from '../../src/cli/streams.js';
-import { vocabulary } from '../../src/cli/wiring.js';
+import { vocabulary } from '../../src/cli/vocabulary.js';
 import { readBench } from '../../src/files/read-bench.js';
 import { readModule } from '../../src/files/read-module.js';
 import { readProcedure } from '../../src/files/read-procedure.js';

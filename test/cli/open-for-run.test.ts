@@ -3,7 +3,7 @@ import { type AddressInfo, createServer } from 'node:net';
 import { expect, it, onTestFinished } from 'vitest';
 import { connectors } from '../../src/cli/connectors.js';
 import { openForRun } from '../../src/cli/open-for-run.js';
-import { planDrivers, readBenchDrivers } from '../../src/cli/wiring.js';
+import { planDrivers, readBenchDrivers } from '../../src/cli/bench-drivers.js';
 import { realClock } from '../../src/clock/real-clock.js';
 import { readBench } from '../../src/files/read-bench.js';
 import { StoppedByOperator } from '../../src/run/stopped.js';

@@ -5,7 +5,7 @@ import { tmpdir } from 'node:os';
 import { dirname, join } from 'node:path';
 import { describe, expect, it, onTestFinished, vi } from 'vitest';
 import { orderText } from '../../src/bench/watchman-order.js';
-import { planDrivers, readBenchDrivers } from '../../src/cli/wiring.js';
+import { planDrivers, readBenchDrivers } from '../../src/cli/bench-drivers.js';
 import { realClock } from '../../src/clock/real-clock.js';
 import type { ConnectionAddress } from '../../src/files/bench.js';
 import { formatAddress } from '../../src/files/connection-address.js';

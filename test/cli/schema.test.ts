@@ -9,9 +9,9 @@ import {
   writtenKinds,
   type SchemaKind,
 } from '../../src/cli/published-schemas.js';
-import { vocabulary } from '../../src/cli/wiring.js';
+import { vocabulary } from '../../src/cli/vocabulary.js';
 import { RailproofError } from '../../src/errors/railproof-error.js';
-import { fileKindOf, parseFile } from '../../src/files/parse-file.js';
+import { kindOf, parseFile } from '../../src/files/parse-file.js';
 import { fileKinds, type FileKind } from '../../src/files/file-kind.js';
 import { benchSchema } from '../../src/files/bench-schema.js';
 import { driverSchema } from '../../src/files/driver-schema.js';
@@ -90,7 +90,7 @@ const checks = Object.fromEntries(
 
 it.each(shipped)('%s is to its schema as it is to the program', (path) => {
   const text = readFileSync(path, 'utf8');
-  const kind: SchemaKind = fileKindOf(text, path);
+  const kind: SchemaKind = kindOf(parseYaml(text, path));
   expect(mismatches(checks[kind], parseYaml(text, path).value)).toEqual([]);
 });
 
@@ -104,7 +104,7 @@ it('the program accepts nothing that the schema of its kind refuses', () => {
       fc.nat(),
       fc.constantFrom(...changes),
       (text, place, change) => {
-        const kind = fileKindOf(text, 'file.yaml');
+        const kind = kindOf(parseYaml(text, 'file.yaml'));
         const value = parseYaml(text, 'file.yaml').value;
         const changed = changedAt(value, place, change);
         const fits = mismatches(checks[kind], changed);

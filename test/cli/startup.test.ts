@@ -45,12 +45,50 @@ it('analysing a record loads no page and no charts of one', async () => {
   expect(scripts.filter((url) => /\/d3-|\/report\/(page|chart|run-page|run-charts)\//.test(url))).toEqual([]);
 });
 
-it('checking a module loads nothing of steps, findings, instruments or records', async () => {
-  const scripts = await loadedBy('check', 'fixtures/modules/K1.yaml');
-  expect(scripts.some((url) => url.endsWith('/files/read-module.js'))).toBe(true);
-  expect(
-    scripts.filter((url) => /\/dist\/(steps|analysis|instrument|bench|record|circuit)\//.test(url)),
-  ).toEqual([]);
+/** What a check of a file must have loaded, and what it must not. */
+const checks = [
+  {
+    kind: 'module',
+    file: 'fixtures/modules/K1.yaml',
+    needs: '/files/read-module.js',
+    not: /\/dist\/(steps|analysis|instrument|bench|record|circuit|simulation)\/|\/re2js\//,
+  },
+  {
+    kind: 'tolerance',
+    file: 'procedures/tolerances/unchanged.yaml',
+    needs: '/analysis/finding-names.js',
+    not: /\/dist\/(steps|instrument|bench|record|simulation)\/|\/re2js\//,
+  },
+  {
+    kind: 'procedure',
+    file: 'procedures/real-limit.yaml',
+    needs: '/steps/index.js',
+    not: /\/dist\/(record|simulation|report)\/|\/files\/read-driver\.js|\/cli\/(watchman|connectors)|\/re2js\//,
+  },
+  {
+    kind: 'driver',
+    file: 'drivers/load-channel-scpi.yaml',
+    needs: '/instrument/dialogue-check.js',
+    not: /\/dist\/(steps|analysis|bench|record|circuit|simulation)\//,
+  },
+  {
+    kind: 'bench',
+    file: 'fixtures/benches/nursery.yaml',
+    needs: '/files/read-driver.js',
+    not: /\/dist\/(steps|analysis|record|simulation)\/|\/cli\/(watchman|connectors)/,
+  },
+  {
+    kind: 'stages',
+    file: 'fixtures/stages/valve-bench.yaml',
+    needs: '/files/read-stages.js',
+    not: /\/dist\/(steps|instrument|simulation)\/|\/d3-|\/re2js\//,
+  },
+] as const;
+
+it.each(checks)('checking a $kind loads nothing that only other kinds need', async ({ file, needs, not }) => {
+  const scripts = await loadedBy('check', file);
+  expect(scripts.some((url) => url.endsWith(needs))).toBe(true);
+  expect(scripts.filter((url) => not.test(url))).toEqual([]);
 });
 
 it('checking a module opens one file for each library, not the hundred that it has', async () => {

@@ -4,7 +4,7 @@ import { connect } from 'node:net';
 import { once } from 'node:events';
 import { join } from 'node:path';
 import { realClock } from '../../src/clock/real-clock.js';
-import { planDrivers, readBenchDrivers } from '../../src/cli/wiring.js';
+import { planDrivers, readBenchDrivers } from '../../src/cli/bench-drivers.js';
 import { withAddresses } from '../../src/files/live-bench.js';
 import { readBench } from '../../src/files/read-bench.js';
 import { type ServedBench, serveBench } from '../../src/simulation/serve.js';

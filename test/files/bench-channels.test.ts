@@ -19,7 +19,7 @@ instruments:
 limits: { voltage: 40 V, current: 8 A, power: 120 W }
 voltage-from: meter-at-module
 `;
-  return { value: parseBench(text, 'nursery.yaml'), text, path: 'nursery.yaml', sha256: '' };
+  return { value: parseBench(text, 'nursery.yaml'), text, path: 'nursery.yaml' };
 }
 
 const single: Driver = { ...toyDriver, name: 'toy' };
@@ -31,7 +31,7 @@ const several: Driver = {
 const named: Driver = { ...several, channels: { select: [], first: 1, last: 4 } };
 
 function drivers(of: FileRead<Bench>, load: Driver, meter: Driver) {
-  const read = (value: Driver): FileRead<Driver> => ({ value, text: '', path: 'toy.yaml', sha256: '' });
+  const read = (value: Driver): FileRead<Driver> => ({ value, text: '', path: 'toy.yaml' });
   return driversOfChannels(
     of,
     postsOf(of.value).map(([post]) => ({ post, file: read(post === 'load' ? load : meter) })),

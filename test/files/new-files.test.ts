@@ -1,7 +1,7 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { parse } from 'yaml';
-import { vocabulary } from '../../src/cli/wiring.js';
+import { vocabulary } from '../../src/cli/vocabulary.js';
 import type { ConnectionAddress } from '../../src/files/bench.js';
 import { benchText, type NewBench } from '../../src/files/new-bench.js';
 import { moduleText } from '../../src/files/new-module.js';

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { fileKindOf, openDocument } from '../../src/files/parse-file.js';
+import { kindOf, openDocument } from '../../src/files/parse-file.js';
+import { parseYaml } from '../../src/files/yaml-document.js';
 import { problemsOf } from './problems-of.js';
 
 describe('the first line says what a file is', () => {
@@ -9,7 +10,7 @@ describe('the first line says what a file is', () => {
     ['driver', '{ railproof: driver 1 }'],
     ['procedure', '---\nrailproof: "procedure 1"'],
   ])('%s', (kind, text) => {
-    expect(fileKindOf(text, 'a.yaml')).toBe(kind);
+    expect(kindOf(parseYaml(text, 'a.yaml'))).toBe(kind);
   });
 
   it.each<[string, string]>([
@@ -44,7 +45,7 @@ describe('the first line says what a file is', () => {
       "a.yaml:1:1: railproof: found nothing; the first line names the kind of file, as in 'railproof: module 1'",
     ],
   ])('%j', (text, problem) => {
-    expect(problemsOf(() => fileKindOf(text, 'a.yaml'))).toEqual([problem]);
+    expect(problemsOf(() => kindOf(parseYaml(text, 'a.yaml')))).toEqual([problem]);
   });
 });
 

@@ -36,9 +36,8 @@ it('what may be left out has its plain default', () => {
 });
 
 it.each(['K1', 'K2', 'K3'])('the nursery knows %s', async (name) => {
-  const { value, sha256, path } = await readModule(`fixtures/modules/${name}.yaml`);
+  const { value, path } = await readModule(`fixtures/modules/${name}.yaml`);
   expect(value).toMatchObject({ name, rated: { voltage: 15, current: 4, ambient: 40 }, input: 'mains' });
-  expect(sha256).toMatch(/^[0-9a-f]{64}$/);
   expect(path).toBe(`fixtures/modules/${name}.yaml`);
 });
 

@@ -1,6 +1,6 @@
 import { readdirSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
-import { vocabulary as whole } from '../../src/cli/wiring.js';
+import { vocabulary as whole } from '../../src/cli/vocabulary.js';
 import { parseTolerance, readTolerance } from '../../src/files/read-tolerance.js';
 import { toleranceExample, vocabulary } from './design-examples.js';
 import { problemsOf } from './problems-of.js';

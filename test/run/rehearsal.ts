@@ -3,7 +3,7 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll } from 'vitest';
 import { simulatedOperator } from '../../src/cli/simulated-operator.js';
-import { vocabulary } from '../../src/cli/wiring.js';
+import { vocabulary } from '../../src/cli/vocabulary.js';
 import type { InputState } from '../../src/bench/load.js';
 import type { Module } from '../../src/files/module.js';
 import { parseProcedure } from '../../src/files/read-procedure.js';

@@ -1,7 +1,10 @@
 import { join } from 'node:path';
 import { performPlan } from '../../src/cli/perform-plan.js';
 import { simulatedOperator } from '../../src/cli/simulated-operator.js';
-import { planDrivers, readBenchDrivers, shipped, vocabulary, worldOf } from '../../src/cli/wiring.js';
+import { planDrivers, readBenchDrivers } from '../../src/cli/bench-drivers.js';
+import { shipped } from '../../src/cli/shipped.js';
+import { vocabulary } from '../../src/cli/vocabulary.js';
+import { worldOf } from '../../src/cli/wiring.js';
 import type { Bench, BenchDrivers, Group } from '../../src/files/bench.js';
 import type { Driver } from '../../src/files/driver.js';
 import type { Module } from '../../src/files/module.js';
@@ -198,5 +201,5 @@ function finer(drivers: BenchDrivers): BenchDrivers {
 }
 
 function asRead<T>(value: T, path: string): FileRead<T> {
-  return { value, path, text: '', sha256: '' };
+  return { value, path, text: '' };
 }

@@ -4,7 +4,7 @@ import { join } from 'node:path';
 import { profilesOf, requireAll } from '../../src/arrangement/profiles.js';
 import type { ModuleProfile } from '../../src/arrangement/module-profile.js';
 import { readDrawer } from '../../src/cli/read-records.js';
-import { shelves } from '../../src/cli/wiring.js';
+import { shelves } from '../../src/cli/shipped.js';
 import type { Bench } from '../../src/files/bench.js';
 import { readDriver } from '../../src/files/read-driver.js';
 import type { SimulatedInstrument, Simulation } from '../../src/files/simulation-section.js';

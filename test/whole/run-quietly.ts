@@ -1,7 +1,10 @@
 import { join } from 'node:path';
 import { performPlan } from '../../src/cli/perform-plan.js';
 import { simulatedOperator } from '../../src/cli/simulated-operator.js';
-import { readBenchDrivers, planDrivers, shipped, vocabulary, worldOf } from '../../src/cli/wiring.js';
+import { readBenchDrivers, planDrivers } from '../../src/cli/bench-drivers.js';
+import { shipped } from '../../src/cli/shipped.js';
+import { vocabulary } from '../../src/cli/vocabulary.js';
+import { worldOf } from '../../src/cli/wiring.js';
 import type { Bench } from '../../src/files/bench.js';
 import type { Module } from '../../src/files/module.js';
 import { readProcedure } from '../../src/files/read-procedure.js';
@@ -47,5 +50,5 @@ export async function runQuietly(
 }
 
 function asRead<T>(value: T, path: string): FileRead<T> {
-  return { value, path, text: '', sha256: '' };
+  return { value, path, text: '' };
 }

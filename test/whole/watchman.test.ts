@@ -15,7 +15,7 @@ import { join } from 'node:path';
 import { afterAll, describe, expect, it, onTestFinished, vi } from 'vitest';
 import { orderText } from '../../src/bench/watchman-order.js';
 import { publishedSchema } from '../../src/cli/published-schemas.js';
-import { planDrivers, readBenchDrivers } from '../../src/cli/wiring.js';
+import { planDrivers, readBenchDrivers } from '../../src/cli/bench-drivers.js';
 import { readBench } from '../../src/files/read-bench.js';
 import type { Connection } from '../../src/instrument/connection.js';
 import { openSerial } from '../../src/instrument/serial-connection.js';

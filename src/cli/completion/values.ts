@@ -2,7 +2,7 @@ import type { Command } from 'commander';
 import { schemaKinds } from '../published-schemas.js';
 import { newKinds } from '../new.js';
 import { shippedNames } from '../../files/shipped-file.js';
-import { shipped } from '../wiring.js';
+import { shipped } from '../shipped.js';
 import type { Completed } from './completed.js';
 import { commandWords, type ValuesOf } from './program-words.js';
 import { shells } from './shells.js';
