@@ -103,12 +103,16 @@ async function allPointsOfOneGroup(steps: number): Promise<Figure> {
   );
 }
 
+/** Far above what both leave of rounding and of ngspice's own tolerances, far below what anyone can measure. */
+const alike = 1e-7;
+
 function figure(
   name: keyof typeof whatOf,
   { ours, rival }: { readonly ours: number; readonly rival: number },
   what: string,
-  beside: Readonly<Record<string, number>>,
+  beside: Readonly<Record<string, number>> & { readonly furthestApart: number },
 ): Figure {
+  if (!(beside.furthestApart < alike)) throw new Error(`both are ${beside.furthestApart} A or V apart`);
   return {
     kind: 'measured',
     name,
