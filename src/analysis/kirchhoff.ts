@@ -1,7 +1,7 @@
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Amperes, Volts } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
-import { combine, expandedFor } from '../statistics/uncertainty-budget.js';
+import { combineStandard, expandedFor } from '../statistics/uncertainty-budget.js';
 import { ballastsByRegression } from './ballasts-by-regression.js';
 import type { Finding } from './finding.js';
 import { amps } from './in-words.js';
@@ -24,6 +24,8 @@ export type Kirchhoff =
 
 /** A sum that chance makes as wrong as this less often is wrong: a whole record has dozens of looks. */
 const strictLevel = 1e-3;
+/** Of standard uncertainties: at that level the normal distribution allows 3.29, and Student's t always more. */
+const surelyAllowed = 3;
 /** What adding floating-point numbers loses. */
 const arithmetic = 1e-9;
 
@@ -91,8 +93,11 @@ function worstSum(header: RunHeader, looks: readonly GroupLook[]): Sum | undefin
       load: -1,
       ballastsAlike: true,
     });
-    const allowed = expandedFor(combine(budget), 1 - strictLevel);
-    const beyond = Math.abs(sum - look.total) / (allowed + arithmetic * Math.max(1, Math.abs(look.total)));
+    const combined = combineStandard(budget);
+    const off = Math.abs(sum - look.total);
+    if (off <= surelyAllowed * combined.standardUncertainty) continue;
+    const allowed = expandedFor(combined, 1 - strictLevel);
+    const beyond = off / (allowed + arithmetic * Math.max(1, Math.abs(look.total)));
     if (beyond > (worst?.beyond ?? 1)) worst = { sum, total: look.total, beyond };
   }
   return worst;

@@ -3,9 +3,10 @@ import type { RunHeader } from '../record/run-header.js';
 import type { UncertainPart } from '../statistics/effective-freedom.js';
 import { mean } from '../statistics/checked.js';
 import {
-  combine,
-  type CombinedUncertainty,
+  type CombinedStandard,
+  combineStandard,
   type Contribution,
+  expandedFor,
   rectangular,
 } from '../statistics/uncertainty-budget.js';
 import { stepsOf } from './curve.js';
@@ -176,14 +177,14 @@ export function budgetOf(
  * How far off the current of one module may be, by its place among the look's currents. Nobody else's current
  * goes into it, so the others are left out: a look at a group costs in proportion to its modules.
  */
-export function ownUncertainty(header: RunHeader, look: GroupLook, index: number): CombinedUncertainty {
+export function ownUncertainty(header: RunHeader, look: GroupLook, index: number): CombinedStandard {
   const alone = { ...look, currents: look.currents.slice(index, index + 1) };
-  return combine(budgetOf(header, alone, { modules: [1] }));
+  return combineStandard(budgetOf(header, alone, { modules: [1] }));
 }
 
 /** The same as half-width of its interval, 95 %. */
 export function expandedCurrent(header: RunHeader, look: GroupLook, index: number): Amperes {
-  return ownUncertainty(header, look, index).expanded;
+  return expandedFor(ownUncertainty(header, look, index), 0.95);
 }
 
 function loadBudget(header: RunHeader, total: Amperes, weight: number): readonly Contribution[] {

@@ -1,8 +1,10 @@
 import type { Amperes, Ratio } from '../quantity/quantity.js';
 import type { RunHeader } from '../record/run-header.js';
+import { coverageFactor } from '../statistics/student-t.js';
+import { type CombinedStandard, expandedFor } from '../statistics/uncertainty-budget.js';
 import { type Cap } from './derating.js';
 import { amps, ratedAmperes } from './in-words.js';
-import { expandedCurrent, type GroupLook } from './module-currents.js';
+import { type GroupLook, ownUncertainty } from './module-currents.js';
 
 /** What a group's recommendation must mind: no module carries more than its own label says, however they share. */
 export type OwnLabels = (current: Amperes) => Cap | undefined;
@@ -15,11 +17,7 @@ export type OwnLabels = (current: Amperes) => Cap | undefined;
  */
 export function withinOwnLabels(header: RunHeader, held: readonly GroupLook[]): OwnLabels {
   const worked = header.modules.flatMap((module, index) => {
-    const points = held.map((look) => ({
-      total: look.total,
-      worked: upperEnd(header, look, index) / module.rated.current,
-    }));
-    const most = firstAtLabel(points);
+    const most = firstAtLabel(header, held, index);
     return most === undefined ? [] : [{ module, most }];
   });
   return (current) => {
@@ -49,23 +47,70 @@ export function smallestLabel({ modules }: RunHeader): OwnLabels {
         };
 }
 
-/** No current flows back into a module, so none carries more than the whole, however little is known of it. */
-function upperEnd(header: RunHeader, look: GroupLook, index: number): Amperes {
-  const { current = 0 } = look.currents[index] ?? {};
-  return Math.min(look.total, current + expandedCurrent(header, look, index));
+/** One module at a point that the group held. */
+class LoadedModule {
+  readonly #current: Amperes;
+  readonly #total: Amperes;
+  readonly #rated: Amperes;
+  readonly #reckon: () => CombinedStandard;
+
+  constructor(header: RunHeader, look: GroupLook, index: number) {
+    this.#current = look.currents[index]?.current ?? 0;
+    this.#total = look.total;
+    this.#rated = header.modules[index]?.rated.current ?? Number.NaN;
+    this.#reckon = () => ownUncertainty(header, look, index);
+  }
+
+  get total(): Amperes {
+    return this.#total;
+  }
+
+  /**
+   * The upper end of its interval, 95 %, over its label. No current flows back into a module, so none carries more
+   * than the whole, however little is known of it.
+   */
+  get worked(): Ratio {
+    return this.#upTo(expandedFor(this.#reckon(), 0.95)) / this.#rated;
+  }
+
+  /** Told by a coverage factor that is too large, if anything: Student's t is most of the work, and mostly clear. */
+  get isSurelyWithinLabel(): boolean {
+    if (this.#total <= this.#rated) return true;
+    const { standardUncertainty, degreesOfFreedom } = this.#reckon();
+    return this.#upTo(factorAtMost(degreesOfFreedom) * standardUncertainty) <= this.#rated;
+  }
+
+  #upTo(expanded: Amperes): Amperes {
+    return Math.min(this.#total, this.#current + expanded);
+  }
+}
+
+const mostFreedom = 100;
+const factors = new Map<number, number>();
+
+/** The coverage factor falls with the degrees of freedom: that of the next lower whole number is no smaller. */
+function factorAtMost(degreesOfFreedom: number): number {
+  const whole = Math.min(mostFreedom, Math.floor(degreesOfFreedom));
+  if (whole < 1) return Number.POSITIVE_INFINITY;
+  const known = factors.get(whole) ?? coverageFactor(whole);
+  factors.set(whole, known);
+  return known;
 }
 
 /** The group's current at which a module first reaches its label, in proportion beyond the last point. */
-function firstAtLabel(
-  points: readonly { readonly total: Amperes; readonly worked: Ratio }[],
-): Amperes | undefined {
-  let before = { total: 0, worked: 0 };
-  for (const point of points) {
-    if (point.worked > 1) {
-      const share = (1 - before.worked) / (point.worked - before.worked);
-      return before.total + share * (point.total - before.total);
-    }
-    before = point;
+function firstAtLabel(header: RunHeader, held: readonly GroupLook[], index: number): Amperes | undefined {
+  const loadedAt = (look: GroupLook): LoadedModule => new LoadedModule(header, look, index);
+  const over = held.findIndex((look) => {
+    const loaded = loadedAt(look);
+    return !loaded.isSurelyWithinLabel && loaded.worked > 1;
+  });
+  const last = over === -1 ? held.at(-1) : held[over - 1];
+  const before = last === undefined ? { total: 0, worked: 0 } : loadedAt(last);
+  const first = held[over];
+  if (first !== undefined) {
+    const point = loadedAt(first);
+    const share = (1 - before.worked) / (point.worked - before.worked);
+    return before.total + share * (point.total - before.total);
   }
   return before.worked > 0 ? before.total / before.worked : undefined;
 }

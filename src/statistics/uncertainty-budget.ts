@@ -13,10 +13,14 @@ export interface Contribution {
   readonly degreesOfFreedom: number;
 }
 
-/** What a budget adds up to; the expanded uncertainty covers 95 %. */
-export interface CombinedUncertainty {
+/** What a budget adds up to, before a coverage is asked for. */
+export interface CombinedStandard {
   readonly standardUncertainty: number;
   readonly degreesOfFreedom: number;
+}
+
+/** What a budget adds up to; the expanded uncertainty covers 95 %. */
+export interface CombinedUncertainty extends CombinedStandard {
   readonly coverageFactor: number;
   /** coverageFactor × standardUncertainty, about 95 % coverage. */
   readonly expanded: number;
@@ -24,13 +28,25 @@ export interface CombinedUncertainty {
 
 /**
  * Combines contributions that are independent of each other: root of the sum of squares (JCGM 100:2008,
- * 5.1.2), effective degrees of freedom (G.4.1), Student's t for 95 % (G.3.2), expanded uncertainty (6.2).
+ * 5.1.2), effective degrees of freedom (G.4.1). For many budgets of which few are expanded: Student's t is most
+ * of the work.
+ * @throws UnfitDataError as `combine` does.
+ */
+export function combineStandard(contributions: readonly Contribution[]): CombinedStandard {
+  const degreesOfFreedom = effectiveDegreesOfFreedom(contributions);
+  return {
+    standardUncertainty: Math.hypot(...contributions.map(({ uncertainty }) => uncertainty)),
+    degreesOfFreedom,
+  };
+}
+
+/**
+ * The same with Student's t for 95 % (JCGM 100:2008, G.3.2) and the expanded uncertainty (6.2).
  * @throws UnfitDataError for no contributions, a negative or missing uncertainty, or degrees of freedom
  * that are not positive.
  */
 export function combine(contributions: readonly Contribution[]): CombinedUncertainty {
-  const degreesOfFreedom = effectiveDegreesOfFreedom(contributions);
-  const standardUncertainty = Math.hypot(...contributions.map(({ uncertainty }) => uncertainty));
+  const { standardUncertainty, degreesOfFreedom } = combineStandard(contributions);
   const factor = coverageFactor(degreesOfFreedom);
   return {
     standardUncertainty,
@@ -42,7 +58,7 @@ export function combine(contributions: readonly Contribution[]): CombinedUncerta
 
 /** Expanded uncertainty for another coverage than 95 %, by Student's t (JCGM 100:2008, G.3.2). */
 export function expandedFor(
-  { standardUncertainty, degreesOfFreedom }: CombinedUncertainty,
+  { standardUncertainty, degreesOfFreedom }: CombinedStandard,
   coverage: number,
 ): number {
   return standardUncertainty === 0 ? 0 : standardUncertainty * coverageFactor(degreesOfFreedom, coverage);

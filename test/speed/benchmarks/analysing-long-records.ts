@@ -1,12 +1,10 @@
-import { createReadStream, mkdirSync, mkdtempSync, rmSync, statSync } from 'node:fs';
-import { tmpdir } from 'node:os';
+import { createReadStream, statSync } from 'node:fs';
 import { join } from 'node:path';
 import { createInterface } from 'node:readline';
 import type * as understanding from '../../../src/report/understand.js';
 import { built } from '../built.js';
 import type { Benchmark, Figure } from '../figure.js';
-import { writeGroupRun } from '../long-record/group-run.js';
-import { writeModuleRun } from '../long-record/module-run.js';
+import { inWrittenRecord, longRecords, type LongRecord } from '../long-record/long-records.js';
 import { median, secondsOf, timedSideBySide } from '../side-by-side.js';
 
 const { understand } = await built<typeof understanding>('report/understand.js');
@@ -15,37 +13,28 @@ const wanted = 1_000_000;
 const shorter = [10_000, 100_000];
 const rounds = 5;
 
-export default (async () => [
-  await analysed('module', writeModuleRun),
-  await analysed('group-of-two', writeGroupRun),
-]) satisfies Benchmark;
+export default (async () => {
+  const figures: Figure[] = [];
+  for (const record of longRecords) figures.push(await analysed(record));
+  return figures;
+}) satisfies Benchmark;
 
-/** From the file to the findings, seals and all, against a program that only reads the lines of the same file. */
-async function analysed(whose: string, write: (folder: string, readings: number) => number): Promise<Figure> {
-  const folder = mkdtempSync(join(tmpdir(), 'railproof-speed-'));
-  try {
-    const { run, readings } = written(folder, wanted, write);
+/** From the file to the findings, seals and all, against a program that only parses the lines of the same file. */
+async function analysed(record: LongRecord): Promise<Figure> {
+  const { whose, write } = record;
+  const grown: Record<string, number> = {};
+  for (const count of shorter) grown[`µs per reading of ${count}`] = await microsecondsEach(record, count);
+  return inWrittenRecord(write, wanted, async (run, readings) => {
     const journal = join(run, 'journal.jsonl');
     const { ours, rival, ratio } = await timedSideBySide({
       ours: () => understand(run).findings,
       rival: () => parsedInChunks(journal),
       rounds,
     });
-    const byReadline = median([
-      await secondsOf(() => parsedByReadline(journal)),
-      await secondsOf(() => parsedByReadline(journal)),
-    ]);
-    const grown: Record<string, number> = {};
-    for (const count of shorter) {
-      const short = written(folder, count, write);
-      const taken = [];
-      for (let time = 0; time < rounds; time += 1) taken.push(await secondsOf(() => understand(short.run)));
-      grown[`µs per reading of ${count}`] = (median(taken) / short.readings) * 1e6;
-    }
     return {
       kind: 'measured',
-      name: `analysing-a-million-readings-of-a-${whose}`,
-      what: `analysing 1,000,000 readings of a ${whose.replaceAll('-', ' ')}`,
+      name: `analysing-1000000-readings-of-${whose.replaceAll(' ', '-')}`,
+      what: `analysing 1,000,000 readings of ${whose}`,
       ours: { value: ours, unit: 's' },
       rival: { value: rival, unit: 's', what: 'JSON.parse of each line, split by hand' },
       ratio,
@@ -53,20 +42,20 @@ async function analysed(whose: string, write: (folder: string, readings: number)
       beside: {
         readings,
         megabytes: statSync(journal).size / 1e6,
-        'JSON.parse of each line of readline, s': byReadline,
+        'JSON.parse of each line of readline, s': await secondsOf(() => parsedByReadline(journal)),
         ...grown,
         [`µs per reading of ${wanted}`]: (ours / readings) * 1e6,
       },
     };
-  } finally {
-    rmSync(folder, { recursive: true, force: true });
-  }
+  });
 }
 
-function written(folder: string, count: number, write: (folder: string, readings: number) => number) {
-  const run = join(folder, String(count));
-  mkdirSync(run);
-  return { run, readings: write(run, count) };
+function microsecondsEach({ write }: LongRecord, count: number): Promise<number> {
+  return inWrittenRecord(write, count, async (run, readings) => {
+    const taken: number[] = [];
+    for (let round = 0; round < rounds; round += 1) taken.push(await secondsOf(() => understand(run)));
+    return (median(taken) / readings) * 1e6;
+  });
 }
 
 /** Chunks of a stream, cut at the ends of lines: what one writes who finds readline slow. */
@@ -74,7 +63,7 @@ async function parsedInChunks(path: string): Promise<number> {
   let lines = 0;
   let rest = '';
   for await (const chunk of createReadStream(path, { encoding: 'utf8' })) {
-    const pieces = (rest + (chunk as string)).split('\n');
+    const pieces = (rest + String(chunk)).split('\n');
     rest = pieces.pop() ?? '';
     for (const line of pieces) {
       if (typeof JSON.parse(line) === 'object') lines += 1;
