@@ -3,6 +3,7 @@ import { readdirSync } from 'node:fs';
 import { availableParallelism, cpus } from 'node:os';
 import { fileURLToPath } from 'node:url';
 import { parseArgs, promisify } from 'node:util';
+import { chosenFrom } from './chosen.js';
 import { type Benchmark, type Figure, reached } from './figure.js';
 import { figuresAsTable } from './table.js';
 
@@ -13,11 +14,18 @@ import { figuresAsTable } from './table.js';
  */
 const { values } = parseArgs({ options: { only: { type: 'string' }, alone: { type: 'string' } } });
 
-if (values.alone === undefined) await measureAll(values.only);
+if (values.alone === undefined) await measureChosen(values.only);
 else process.stdout.write(JSON.stringify(await (await benchmark(values.alone))()));
 
-async function measureAll(only: string | undefined): Promise<void> {
-  const names = only === undefined ? allNames() : [only];
+async function measureChosen(only: string | undefined): Promise<void> {
+  const chosen = chosenFrom(allNames(), only);
+  if (chosen.kind === 'unknown') {
+    process.stderr.write(`${chosen.message}\n`);
+    process.exitCode = 64;
+  } else await measure(chosen.names);
+}
+
+async function measure(names: readonly string[]): Promise<void> {
   const figures: Figure[] = [];
   for (const [index, name] of names.entries()) {
     process.stderr.write(`${index + 1} of ${names.length}: ${name}\n`);
