@@ -37,7 +37,11 @@ const columnOf: Readonly<Record<string, (typeof columns)[number]>> = {
 
 type Row = Partial<Record<(typeof columns)[number], string>>;
 
-const batchSize = 500;
+/**
+ * So few that they are written before the next collection of garbage finds them: what it finds it takes for lasting, and
+ * of a record of millions of readings that is more memory than all else.
+ */
+const batchSize = 64;
 
 /**
  * Writes readings.csv (RFC 4180, units in the header) from the journal: one row for each sample, which
