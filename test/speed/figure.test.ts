@@ -21,6 +21,7 @@ it.each([
   [0.69, { atLeast: 0.7 }, false],
   [Number.NaN, { atMost: 3 }, false],
   [Number.NaN, { atLeast: 3 }, false],
-])('a ratio of %d under the bound %j is reached: %s', (ratio, bound, expected) => {
+  [11, 'none' as const, true],
+] as const)('a ratio of %d under the bound %j is reached: %s', (ratio, bound, expected) => {
   expect(reached(measured(ratio, bound))).toBe(expected);
 });

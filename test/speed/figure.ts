@@ -1,5 +1,5 @@
-/** How far a figure may go; both ends are allowed. */
-export type Bound = { readonly atMost: number } | { readonly atLeast: number };
+/** How far a figure may go, both ends allowed; `none` where it is only told, beside one that has a goal. */
+export type Bound = { readonly atMost: number } | { readonly atLeast: number } | 'none';
 
 /** What was measured, in the unit that is read most easily. */
 export interface Amount {
@@ -37,6 +37,8 @@ export interface Skipped {
 /** One file of `benchmarks`, its default export: measures as often and as long as it takes to be sure. */
 export type Benchmark = () => Promise<Figure[]>;
 
+/** Also true of what has no goal. */
 export function reached({ ratio, bound }: Measured): boolean {
+  if (bound === 'none') return true;
   return 'atMost' in bound ? ratio <= bound.atMost : ratio >= bound.atLeast;
 }

@@ -26,11 +26,12 @@ function rowOf(figure: Figure): readonly string[] {
     `${amountInWords(rival)}: ${rival.what}`,
     threeDigits(ratio),
     boundInWords(bound),
-    reached(figure) ? 'reached' : 'NOT REACHED',
+    bound === 'none' ? '' : reached(figure) ? 'reached' : 'NOT REACHED',
   ];
 }
 
 function boundInWords(bound: Bound): string {
+  if (bound === 'none') return 'none';
   return 'atMost' in bound ? `at most ${bound.atMost}` : `at least ${bound.atLeast}`;
 }
 
