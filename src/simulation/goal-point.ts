@@ -2,6 +2,7 @@ import type { LoadLaw } from '../circuit/load-law.js';
 import type { SimulatedModule } from '../files/simulation-section.js';
 import type { Kelvins, Ratio, Seconds } from '../quantity/quantity.js';
 import type { CircuitState } from './circuit-state.js';
+import { type Asked, type Gives, goalsOn, isSamePoint } from './known-goals.js';
 import { curveOf, leastHeldVoltage, startingCurveOf } from './module-curve-of.js';
 import { type Part, type RestingPoint, type SimulatedCircuit, restingPoint } from './resting-point.js';
 import { ATTEMPT_SHARE } from './retry.js';
@@ -23,37 +24,50 @@ export function goalPoint(
   law: LoadLaw,
   isTrying: IsTrying,
 ): RestingPoint {
-  const isHeldUp = circuit.circuit === 'parallel' && state.modules.some(({ phase }) => phase.kind === 'held');
-  const gives = circuit.modules.map((module, place) =>
-    givesNow(module, state.modules[place]?.phase ?? { kind: 'off' }, isHeldUp, isTrying),
-  );
-  const factors = circuit.modules.map((module, place) =>
-    limitFactor(module, state.modules[place]?.rise ?? 0),
-  );
-  const last = lastGoal.get(law);
-  if (last?.circuit === circuit && isSame(last.gives, gives) && isSame(last.factors, factors))
-    return last.point;
+  const goals = goalsOn(law, circuit);
+  const asked = askedOf(circuit, state, isTrying);
+  const known = goals.find(asked);
+  if (known !== undefined) return known;
   const parts = circuit.modules.map((module, place) =>
-    partOf(module, state.modules[place]?.rise ?? 0, gives[place] ?? 'nothing'),
+    partOf(module, state.modules[place]?.rise ?? 0, asked.gives[place] ?? 'nothing'),
   );
   const point =
-    circuit.circuit === 'parallel' && !isHeldUp
+    circuit.circuit === 'parallel' && !isHeldUp(circuit, state)
       ? withoutFailedAttempts(circuit, state, law, parts)
       : withoutLost(circuit, state, law, parts);
-  lastGoal.set(law, { circuit, gives, factors, point });
+  goals.keep(asked, point);
   return point;
 }
 
-type Gives = 'on its curve' | 'from below' | 'nothing';
+function askedOf(circuit: SimulatedCircuit, state: CircuitState, isTrying: IsTrying): Asked {
+  const isUp = isHeldUp(circuit, state);
+  const gives = circuit.modules.map((module, place) =>
+    givesNow(module, state.modules[place]?.phase ?? { kind: 'off' }, isUp, isTrying),
+  );
+  return {
+    gives,
+    factors: circuit.modules.map((module, place) =>
+      gives[place] === 'nothing' ? OF_NO_LIMIT : limitFactor(module, state.modules[place]?.rise ?? 0),
+    ),
+  };
+}
 
-function givesNow(module: SimulatedModule, phase: ModulePhase, isHeldUp: boolean, isTrying: IsTrying): Gives {
+/** Where a module gives nothing it does not matter how warm it is. */
+const OF_NO_LIMIT: Ratio = 1;
+
+/** Whether a bus is. */
+function isHeldUp({ circuit }: SimulatedCircuit, { modules }: CircuitState): boolean {
+  return circuit === 'parallel' && modules.some(({ phase }) => phase.kind === 'held');
+}
+
+function givesNow(module: SimulatedModule, phase: ModulePhase, isUp: boolean, isTrying: IsTrying): Gives {
   switch (phase.kind) {
     case 'held':
       return 'on its curve';
     case 'limiting':
-      return isHeldUp && !staysAtItsLimit(module) ? 'nothing' : 'from below';
+      return isUp && !staysAtItsLimit(module) ? 'nothing' : 'from below';
     case 'retrying':
-      return !isHeldUp && isTrying(phase.since, periodOf(module)) ? 'from below' : 'nothing';
+      return !isUp && isTrying(phase.since, periodOf(module)) ? 'from below' : 'nothing';
     case 'off':
     case 'latched':
       return 'nothing';
@@ -71,20 +85,30 @@ function partOf(module: SimulatedModule, rise: Kelvins, gives: Gives): Part {
   }
 }
 
-/** Asked again and again of one moment and of the next, so the last answer is kept. */
-const lastGoal = new WeakMap<
-  LoadLaw,
-  {
-    readonly circuit: SimulatedCircuit;
-    readonly gives: readonly Gives[];
-    /** Of a rise only what it does to the limit counts. */
-    readonly factors: readonly Ratio[];
-    readonly point: RestingPoint;
-  }
->();
-
-function isSame(some: readonly unknown[], others: readonly unknown[]): boolean {
-  return some.every((one, place) => one === others[place]);
+/**
+ * Whether no limit has a part in where the circuit rests at one temperature and at another, be it trying or not;
+ * then it rests there at all between them.
+ */
+export function isSteadyBetween(
+  circuit: SimulatedCircuit,
+  one: CircuitState,
+  other: CircuitState,
+  law: LoadLaw,
+): boolean {
+  const tries = one.modules.some(({ phase }) => phase.kind === 'retrying') ? [true, false] : [true];
+  return tries.every((tries) => {
+    const point = goalPoint(circuit, one, law, () => tries);
+    if (
+      !isSamePoint(
+        point,
+        goalPoint(circuit, other, law, () => tries),
+      )
+    )
+      return false;
+    const asked = askedOf(circuit, one, () => tries);
+    goalsOn(law, circuit).keep(asked, point, askedOf(circuit, other, () => tries).factors);
+    return true;
+  });
 }
 
 /** What heats: the square of each module's current, averaged over the periods of those that keep trying. */

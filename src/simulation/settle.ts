@@ -39,14 +39,14 @@ function retrying(
 
 /**
  * Applies at once what follows from the present load and temperatures: who is pushed past its limit, whom
- * that pushes past theirs, who can come back. `from` are the voltages that the modules had.
+ * that pushes past theirs, who can come back. `from` says which voltages the modules had, where one comes up.
  */
 export function settle(
   circuit: SimulatedCircuit,
   state: CircuitState,
   law: LoadLaw,
-  from: readonly Volts[],
   tries: Tries,
+  from: () => readonly Volts[],
 ): CircuitState {
   const rises = state.modules.map(({ rise }) => rise);
   const feeding = circuit.modules.map((module, place) => {
@@ -76,12 +76,12 @@ function phaseIn(
   state: CircuitState,
   { delivering }: Standing,
   place: number,
-  from: readonly Volts[],
+  from: () => readonly Volts[],
 ): ModulePhase | undefined {
   const module = modules[place];
   const isHeld = state.modules[place]?.phase.kind === 'held';
   if (module === undefined || isHeld === delivering[place]) return undefined;
-  return isHeld ? overloaded(module, state.at) : { kind: 'held', since: state.at, from: from[place] ?? 0 };
+  return isHeld ? overloaded(module, state.at) : { kind: 'held', since: state.at, from: from()[place] ?? 0 };
 }
 
 /**

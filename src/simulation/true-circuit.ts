@@ -52,7 +52,13 @@ export function trueCircuit(
   const at = (load: Amperes): { readonly state: CircuitState; readonly point: RestingPoint } => {
     const law: LoadLaw =
       load > 0 ? { kind: 'current', current: load, leastVoltage: 0, leads } : { kind: 'open' };
-    const state = settle(whole, standing, law, [], () => modules.map(() => false));
+    const state = settle(
+      whole,
+      standing,
+      law,
+      () => modules.map(() => false),
+      () => [],
+    );
     return { state, point: goalPoint(whole, state, law, () => false) };
   };
   const openCircuitVoltage = at(0).point.voltage;

@@ -1,17 +1,17 @@
 import type { LoadLaw } from '../circuit/load-law.js';
 import type { Seconds } from '../quantity/quantity.js';
+import { calmly } from './calm.js';
 import type { CircuitState } from './circuit-state.js';
 import { comingUp } from './coming-up.js';
 import { goalPoint, meanSquareCurrents } from './goal-point.js';
 import { firstFailing } from './first-failing.js';
+import { isSameFor, outlook } from './outlook.js';
 import type { RestingPoint, SimulatedCircuit } from './resting-point.js';
 import { attempting, nextAttempt } from './retry.js';
-import { atAnyTime, settle, whileTrying, withNewAttempts } from './settle.js';
+import { settle, whileTrying, withNewAttempts } from './settle.js';
+import type { Which } from './standing.js';
 import { overloaded, periodOf } from './virtual-module.js';
-import { riseAfter, steadyRise } from './warming.js';
-
-/** While current and warming act on each other, the currents are held for this share of the time constant. */
-const STEPS_PER_TIME_CONSTANT = 20;
+import { longestHeld, warmed } from './warming.js';
 
 /** Takes the input of some modules away; the others must carry everything. */
 export function unpowered(
@@ -20,14 +20,13 @@ export function unpowered(
   law: LoadLaw,
   places: ReadonlySet<number>,
 ): CircuitState {
-  const from = voltagesOf(outputOf(circuit, state, law));
   const without = {
     ...state,
     modules: state.modules.map((module, place) =>
       places.has(place) ? { ...module, phase: { kind: 'off' } as const } : module,
     ),
   };
-  return settle(circuit, without, law, from, whileTrying);
+  return settle(circuit, without, law, whileTrying, () => voltagesOf(outputOf(circuit, state, law)));
 }
 
 /** Gives it back: they start from below, which clears a latch and may lock up on a load. */
@@ -38,14 +37,13 @@ export function powered(
   places: ReadonlySet<number>,
 ): CircuitState {
   const starting = new Set([...places].filter((place) => state.modules[place]?.phase.kind === 'off'));
-  const from = voltagesOf(outputOf(circuit, state, law));
   const begun = {
     ...state,
     modules: state.modules.map((module, place) =>
       starting.has(place) ? { ...module, phase: { kind: 'limiting' } as const } : module,
     ),
   };
-  const settled = settle(circuit, begun, law, from, whileTrying);
+  const settled = settle(circuit, begun, law, whileTrying, () => voltagesOf(outputOf(circuit, state, law)));
   return {
     ...settled,
     modules: settled.modules.map((state, place) => {
@@ -63,13 +61,13 @@ export function onNewLoad(
   before: LoadLaw,
   after: LoadLaw,
 ): CircuitState {
-  return settle(circuit, state, after, voltagesOf(outputOf(circuit, state, before)), whileTrying);
+  return settle(circuit, state, after, whileTrying, () => voltagesOf(outputOf(circuit, state, before)));
 }
 
 /**
  * Carries a circuit on to a later moment on an unchanged load. Warming is first order and exact over any
- * length; the moment a warming (or cooling) limit passes the load is searched to a microsecond, so an
- * hour costs no more than a second.
+ * length, and while a circuit is calm it is all there is; the moment a warming (or cooling) limit passes the
+ * load is searched to a microsecond, so an hour costs no more than a second.
  */
 export function advance(
   circuit: SimulatedCircuit,
@@ -78,10 +76,7 @@ export function advance(
   until: Seconds,
 ): CircuitState {
   let now = state;
-  while (now.at < until) {
-    const from = voltagesOf(outputOf(circuit, now, law));
-    now = settle(circuit, stretch(circuit, now, law, until), law, from, withNewAttempts);
-  }
+  while (now.at < until) now = calmly(circuit, now, law, until) ?? watched(circuit, now, law, until);
   return now;
 }
 
@@ -95,44 +90,30 @@ function voltagesOf({ modules }: RestingPoint): readonly number[] {
   return modules.map(({ voltage }) => voltage);
 }
 
+/** To the next moment at which a phase may change, at the longest to `until`, and what it comes to there. */
+function watched(circuit: SimulatedCircuit, state: CircuitState, law: LoadLaw, until: Seconds): CircuitState {
+  const then = stretch(circuit, state, law, until);
+  return settle(circuit, then, law, withNewAttempts, () => voltagesOf(outputOf(circuit, state, law)));
+}
+
 /** One stretch in which no phase changes, at the longest to `until`. */
 function stretch(circuit: SimulatedCircuit, state: CircuitState, law: LoadLaw, until: Seconds): CircuitState {
   const currents = meanSquareCurrents(circuit, state, law);
-  const targets = circuit.modules.map((module, place) => steadyRise(module, currents[place] ?? 0));
-  const risen = (at: Seconds): CircuitState => ({
-    at,
-    modules: circuit.modules.flatMap((module, place) => {
-      const own = state.modules[place];
-      if (own === undefined) return [];
-      const rise = riseAfter(module, own.rise, targets[place] ?? 0, at - state.at);
-      return [{ rise, phase: own.phase }];
-    }),
-  });
+  const risen = (at: Seconds): CircuitState => warmed(circuit, state, currents, at);
   const could = outlook(circuit, state, law);
   const goal = Math.min(until, nextStart(circuit, state, could));
-  const isSteady = meanSquareCurrents(circuit, risen(goal), law).every(
-    (later, place) => Math.abs(later - (currents[place] ?? 0)) <= 1e-9 * (currents[place] ?? 0),
-  );
-  const end = isSteady ? goal : Math.min(goal, state.at + step(circuit));
-  const holds = (at: Seconds): boolean => {
-    const then = outlook(circuit, risen(at), law);
-    return then.every((is, place) => is === could[place]);
-  };
+  const step = longestHeld(circuit);
+  const isSteady = (): boolean =>
+    meanSquareCurrents(circuit, risen(goal), law).every(
+      (later, place) => Math.abs(later - (currents[place] ?? 0)) <= 1e-9 * (currents[place] ?? 0),
+    );
+  const end = goal <= state.at + step || isSteady() ? goal : state.at + step;
+  const holds = (at: Seconds): boolean => isSameFor(outlook(circuit, risen(at), law), could);
   return risen(holds(end) ? end : firstFailing(holds, state.at, end));
 }
 
-function step({ modules }: SimulatedCircuit): Seconds {
-  const constants = modules.flatMap(({ thermal }) => (thermal === undefined ? [] : [thermal.timeConstant]));
-  return Math.min(Number.POSITIVE_INFINITY, ...constants) / STEPS_PER_TIME_CONSTANT;
-}
-
-/** What decides the phases, as warming moves it: which modules are held now, or could be if they tried? */
-function outlook(circuit: SimulatedCircuit, state: CircuitState, law: LoadLaw): readonly boolean[] {
-  return settle(circuit, state, law, [], atAnyTime).modules.map(({ phase }) => phase.kind === 'held');
-}
-
 /** When the next module tries that could be held. */
-function nextStart({ modules }: SimulatedCircuit, state: CircuitState, could: readonly boolean[]): Seconds {
+function nextStart({ modules }: SimulatedCircuit, state: CircuitState, could: Which): Seconds {
   return Math.min(
     Number.POSITIVE_INFINITY,
     ...state.modules.map(({ phase }, place) => {
