@@ -6,7 +6,7 @@ import { held, isSameFor, outlook } from './outlook.js';
 import type { SimulatedCircuit } from './resting-point.js';
 import { attemptBegins } from './retry.js';
 import { type ModulePhase, periodOf } from './virtual-module.js';
-import { longestHeld, warmed } from './warming.js';
+import { limitFactor, longestHeld, warmed } from './warming.js';
 
 /**
  * Temperatures over which a circuit in these phases stays in them: nobody is pushed past a limit, and nobody who
@@ -77,6 +77,7 @@ function calmFrom(
   const currents = meanSquareCurrents(circuit, state, law);
   const calmTo = (at: Seconds): Calm | undefined => {
     const then = warmed(circuit, state, currents, at);
+    if (hasLostALimit(circuit, then)) return undefined;
     if (!isSameFor(outlook(circuit, then, law), stands)) return undefined;
     return between(circuit, state, then, isSteadyBetween(circuit, state, then, law) ? currents : undefined);
   };
@@ -105,6 +106,14 @@ function between(
       return { least: Math.min(rise, then), most: Math.max(rise, then) };
     }),
   };
+}
+
+/** Then nothing would come of solving it: a limit that warmth has taken away altogether is no point on a curve. */
+function hasLostALimit({ modules }: SimulatedCircuit, state: CircuitState): boolean {
+  return state.modules.some(({ rise }, place) => {
+    const module = modules[place];
+    return module !== undefined && limitFactor(module, rise) === 0;
+  });
 }
 
 function holds(calm: Calm, { modules }: CircuitState): boolean {
