@@ -4,11 +4,16 @@ import { NoRecordError } from './record-error.js';
 
 /** No event is longer, in bytes without the end of its line. */
 export const longestLine = 1 << 20;
-/**
- * Some dozens of lines. Their text is in use until the last of them was seen; what a collection of garbage finds in use
- * it takes for lasting, and with blocks of some thousand lines that was a third of all memory, and no faster.
- */
-const readAtOnce = 1 << 13;
+/** How many bytes are asked for at once. */
+export const atOnce = {
+  /**
+   * Some dozens of lines. Their text is in use until the last of them was seen; what a collection of garbage finds in
+   * use it takes for lasting, and with blocks of some thousand lines that was a third of all memory, and no faster.
+   */
+  asText: 1 << 13,
+  /** Of bytes nothing is made that would have to be collected. */
+  asBytes: 1 << 18,
+} as const;
 export const lineEnd = 0x0a;
 
 /** Whole lines, each with its end; or, of the last line of a file, what is there without an end. */
@@ -16,12 +21,16 @@ export type Block =
   { readonly kind: 'lines'; readonly bytes: Buffer } | { readonly kind: 'rest'; readonly bytes: Buffer };
 
 /**
- * Hands over a file's lines, some dozens at once, up to `upTo` bytes. The bytes are good until `visit` is back:
+ * Hands over a file's lines, as many at once as `readAtOnce` bytes hold, up to `upTo` bytes. The bytes are good until `visit` is back:
  * the next ones take their place, so that memory does not grow with the file. A line that is far too long ends the
  * reading, as rest.
  * @throws NoRecordError when it can't be read.
  */
-export function eachBlock(path: string, upTo: number, visit: (block: Block) => 'go on' | 'stop'): void {
+export function eachBlock(
+  path: string,
+  { upTo, readAtOnce }: { readonly upTo: number; readonly readAtOnce: number },
+  visit: (block: Block) => 'go on' | 'stop',
+): void {
   const file = opened(path);
   try {
     const room = Buffer.allocUnsafe(longestLine + readAtOnce);

@@ -15,10 +15,7 @@ export function parseLine(line: string, first: boolean): TimedEvent | undefined 
   const shape = typeof name === 'string' ? shapes.get(name) : undefined;
   if (shape === undefined || !isNumber(t) || first !== (name === 'opened')) return undefined;
   if (needsSeal(fields) && !endsInSeal(line)) return undefined;
-  for (const [field, fits] of shape) {
-    if (!fits(fields[field])) return undefined;
-  }
-  return event as TimedEvent;
+  return shape.every(({ field, fits }) => fits(fields[field])) ? (event as TimedEvent) : undefined;
 }
 
 /** Nor is anything carried on from the end of a step that bears none. */
@@ -136,6 +133,9 @@ const shapeOf: Shapes = {
   ended: { how: isOneOf(['completed', 'stopped', 'failed']), reason: orNull(isText), status: isNumber },
 };
 
-const shapes: ReadonlyMap<string, readonly (readonly [string, Fits])[]> = new Map(
-  Object.entries(shapeOf).map(([name, fields]) => [name, Object.entries(fields)]),
+const shapes: ReadonlyMap<string, readonly { readonly field: string; readonly fits: Fits }[]> = new Map(
+  Object.entries(shapeOf).map(([name, fields]) => [
+    name,
+    Object.entries(fields).map(([field, fits]) => ({ field, fits })),
+  ]),
 );

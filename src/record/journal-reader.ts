@@ -1,4 +1,4 @@
-import { eachBlock, lineEnd } from './journal-blocks.js';
+import { atOnce, eachBlock, lineEnd } from './journal-blocks.js';
 import type { Integrity } from './journal-check.js';
 import type { TimedEvent } from './journal-event.js';
 import { parseLine } from './journal-line.js';
@@ -15,7 +15,7 @@ export function readJournal(
   let lines = 0;
   let bytes = 0;
   let result = integrity;
-  eachBlock(path, integrity.bytes, (block) => {
+  eachBlock(path, { upTo: integrity.bytes, readAtOnce: atOnce.asText }, (block) => {
     const before = lines;
     for (const line of linesOf(block.bytes)) {
       const event = parseLine(line, lines === 0);
