@@ -27,7 +27,9 @@ export const otherHeader = 'it does not begin with the run.json that is here now
  */
 export function checkJournal(path: string): Integrity {
   const check = new JournalCheck();
-  eachBlock(path, { upTo: Number.POSITIVE_INFINITY, readAtOnce: atOnce.asBytes }, (block) => check.add(block));
+  eachBlock(path, { upTo: Number.POSITIVE_INFINITY, readAtOnce: atOnce.asBytes }, (block) =>
+    check.add(block),
+  );
   return check.result();
 }
 
