@@ -1,4 +1,13 @@
-import { type Document, isMap, isSeq, parseDocument, Scalar, visit, type YAMLMap, type YAMLSeq } from '../libraries/yaml.js';
+import {
+  type Document,
+  isMap,
+  isSeq,
+  parseDocument,
+  Scalar,
+  visit,
+  type YAMLMap,
+  type YAMLSeq,
+} from '../libraries/yaml.js';
 import { formatQuantity } from '../quantity/format-quantity.js';
 import type { Seconds } from '../quantity/quantity.js';
 import type { Wire } from './driver.js';

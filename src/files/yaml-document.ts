@@ -1,4 +1,13 @@
-import { isMap, isNode, isScalar, isSeq, LineCounter, parseDocument, type Document, type Pair } from '../libraries/yaml.js';
+import {
+  isMap,
+  isNode,
+  isScalar,
+  isSeq,
+  LineCounter,
+  parseDocument,
+  type Document,
+  type Pair,
+} from '../libraries/yaml.js';
 import { BadFileError, type FileProblem } from './file-error.js';
 import { largestFile, tooLarge } from './file-size.js';
 import { limitProblem, nestsTooDeeply, repeatedKeys, unprintable } from './yaml-limits.js';

@@ -1,4 +1,13 @@
-import { isAlias, isCollection, isNode, isPair, isScalar, visit, type Document, type Node } from '../libraries/yaml.js';
+import {
+  isAlias,
+  isCollection,
+  isNode,
+  isPair,
+  isScalar,
+  visit,
+  type Document,
+  type Node,
+} from '../libraries/yaml.js';
 import { shown } from '../quantity/shown-text.js';
 import type { TextProblem } from './yaml-syntax.js';
 
