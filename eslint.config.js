@@ -6,7 +6,7 @@ import tseslint from 'typescript-eslint';
 // test/architecture.test.ts reads the same table and proves it on every file.
 export const mayImport = {
   errors: [],
-  // Each file there is joined into one by the build (rolldown.config.js).
+  // Each file there is joined into one by the build (join-libraries.js).
   libraries: [],
   clock: ['errors'],
   quantity: ['errors'],

@@ -1,4 +1,4 @@
-/** What is used of yaml, which the build puts into one file (`rolldown.config.js`): opening seventy takes time. */
+/** What is used of yaml, which the build puts into one file (`join-libraries.js`): opening seventy takes time. */
 export {
   isAlias,
   isCollection,

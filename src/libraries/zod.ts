@@ -1,5 +1,5 @@
 /**
- * What is used of zod, by name, so that the build can put just this into one file (`rolldown.config.js`): the whole of
+ * What is used of zod, by name, so that the build can put just this into one file (`join-libraries.js`): the whole of
  * it is some hundred files, and takes six times as long to load.
  */
 export {

@@ -1,10 +1,10 @@
 import { readdirSync } from 'node:fs';
-import { defineConfig } from 'rolldown';
+import { build } from 'rolldown';
 
 // Last step of the build: each library of src/libraries becomes one file with only what is used of it, where tsc
 // wrote a file that names the library. Opening a hundred files takes longer than all that a short command does.
-export default defineConfig(
-  readdirSync('src/libraries').map((file) => ({
+for (const file of readdirSync('src/libraries')) {
+  await build({
     input: `src/libraries/${file}`,
     platform: 'node',
     output: {
@@ -13,5 +13,5 @@ export default defineConfig(
       sourcemap: true,
       banner: '/* Joined from a library; its licence lies in its own package in node_modules. */',
     },
-  })),
-);
+  });
+}
