@@ -20,8 +20,8 @@ const { realClock } = await built<typeof realClocks>('clock/real-clock.js');
 const { serveOnPty } = await built<typeof ptys>('simulation/serve-pty.js');
 
 /** At each of the four points of a ramp. */
-const samples = 1500;
-const rounds = 7;
+const samples = 500;
+const rounds = 5;
 
 export default (async () => {
   const { port, end } = await briskInstrument();
