@@ -190,11 +190,12 @@ export class Points {
       taps: tapsIn(taken),
       temperature: temperatureIn(taken),
     };
+    // Spreads last: V8 makes a hidden class for each name after one, each time, and keeps them for long.
     show({
-      ...(set.current === undefined ? {} : { setCurrent: set.current }),
-      ...(seen.temperature === undefined ? {} : { temperature: seen.temperature }),
       voltage: seen.voltage,
       current: seen.current,
+      ...(set.current === undefined ? {} : { setCurrent: set.current }),
+      ...(seen.temperature === undefined ? {} : { temperature: seen.temperature }),
     });
     return seen;
   }

@@ -35,7 +35,8 @@ export class RunSoFar {
   readonly #steps: Growing<StepSoFar>[];
   #step = 0;
   #stepBegan: Seconds;
-  #figures: Progress = {};
+  #read: Omit<Progress, 'note'> = {};
+  #note: string | undefined;
 
   /** @param done how many steps, from the first, were done in the run that this one goes on with. */
   constructor(plan: Plan, clock: Clock, done: number) {
@@ -75,20 +76,20 @@ export class RunSoFar {
   stepBegan(number: number): void {
     this.#step = number;
     this.#stepBegan = this.#clock.now();
-    this.#figures = {};
+    this.#read = {};
+    this.#note = undefined;
     const step = this.#steps[number - 1];
     if (step !== undefined) step.state = 'now';
   }
 
   get figures(): Progress {
-    return this.#figures;
+    return this.#note === undefined ? this.#read : { ...this.#read, note: this.#note };
   }
 
   /** What was read last stays until something else was; a voltage that comes alone has no current beside it. */
-  seen(progress: Progress): void {
-    const { note, ...before } = this.#figures;
-    const kept = progress.voltage === undefined ? before : {};
-    this.#figures = { ...(note === undefined ? {} : { note }), ...kept, ...progress };
+  seen({ note, ...read }: Progress): void {
+    this.#note = note ?? this.#note;
+    this.#read = read.voltage === undefined ? { ...this.#read, ...read } : read;
   }
 
   recorded(event: JournalEvent): void {
