@@ -68,7 +68,7 @@ export function writeReadingsCsv(folder: RunFolder): void {
 }
 
 /** A point as it stands in the table: what it was begun for, and what it came to. */
-interface PointOfTable extends PointBegan {
+interface PointOfTable extends Pick<PointBegan, 'step' | 'point' | 'phase' | 'set'> {
   readonly kind: string;
   readonly outcome: PointEnded['outcome'] | '';
 }
@@ -93,7 +93,8 @@ function eachSample(journal: string, visit: (row: Row) => void): void {
     if (event.event === 'step-began') kind = event.kind;
     if (event.event === 'point-began') {
       finish();
-      point = { ...event, kind, outcome: outcomes[begun] ?? '' };
+      const { step, point: number, phase, set } = event;
+      point = { step, point: number, phase, set, kind, outcome: outcomes[begun] ?? '' };
       begun += 1;
     }
     if (event.event !== 'reading' || point === undefined) return;

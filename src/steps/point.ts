@@ -133,7 +133,7 @@ export class Points {
     const load = await this.#loadAfter(plan.set, last);
     await this.#context.bench.source?.confirm();
     await this.#context.bench.places.confirm();
-    return { ...rest, last: last.t, load };
+    return { last: last.t, load, ...rest };
   }
 
   /** Nothing is made of a sample that was taken across a gap, and of none that would follow it. */
