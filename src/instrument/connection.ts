@@ -10,14 +10,17 @@ export interface Connection {
   readonly address: string;
   /** What came out otherwise than was asked for when it was opened; for whoever opened it to tell. */
   readonly remark?: Notice | undefined;
-  /** @throws ConnectionLostError */
-  write(bytes: Uint8Array): Promise<void>;
+  /**
+   * Done once the port has taken them; hands over how long from then on they are on their way out.
+   * @throws ConnectionLostError
+   */
+  write(bytes: Uint8Array): Promise<Seconds>;
   /**
    * The bytes that have arrived since the last call, at least one; undefined when none came in time.
    * With 0 it takes what is there and does not wait.
    * @throws ConnectionLostError once the other side is gone and all that it sent has been received.
    */
   receive(within: Seconds): Promise<Uint8Array | undefined>;
-  /** Never rejects; a second call is of no effect. */
+  /** Once all that was written is out. Never rejects; a second call is of no effect. */
   close(): Promise<void>;
 }

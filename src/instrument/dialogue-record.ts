@@ -10,6 +10,8 @@ export type Opened = At<'opened'> & { readonly address: string };
 /** None could be made. */
 export type NotOpened = At<'unreachable' | 'busy'> & { readonly reason: string };
 export type Sent = At<'sent'> & { readonly bytes: Uint8Array };
+/** How long what was sent just before is still on its way out, where its port is slow. */
+export type OutIn = At<'out-in'> & { readonly seconds: Seconds };
 export type Received = At<'received'> & { readonly bytes: Uint8Array };
 export type Lost = At<'lost'> & { readonly reason: string };
 /**
@@ -19,7 +21,7 @@ export type Lost = At<'lost'> & { readonly reason: string };
 export type Silent = At<'silent'> & { readonly times: number };
 
 /** One thing that happened on a line. */
-export type TraceEntry = Opened | NotOpened | Sent | Received | Lost | Silent;
+export type TraceEntry = Opened | NotOpened | Sent | OutIn | Received | Lost | Silent;
 
 export type Trace = (entry: TraceEntry) => void;
 
@@ -51,6 +53,8 @@ function contentOf(entry: TraceEntry): string | number {
     case 'busy':
     case 'lost':
       return entry.reason;
+    case 'out-in':
+      return entry.seconds;
     case 'silent':
       return entry.times;
   }
@@ -71,7 +75,7 @@ export function readDialogueLine(line: string): TraceEntry | undefined {
   if (typeof t !== 'number' || !Number.isFinite(t) || content === undefined || more.length > 0)
     return undefined;
   const [kind, value] = content;
-  return typeof value === 'string' ? entryOfText(t, kind, value) : entryOfCount(t, kind, value);
+  return typeof value === 'string' ? entryOfText(t, kind, value) : entryOfNumber(t, kind, value);
 }
 
 function entryOfText(t: Seconds, kind: string, text: string): TraceEntry | undefined {
@@ -90,9 +94,10 @@ function entryOfText(t: Seconds, kind: string, text: string): TraceEntry | undef
   }
 }
 
-function entryOfCount(t: Seconds, kind: string, times: unknown): TraceEntry | undefined {
-  const isCount = Number.isSafeInteger(times) && (times as number) > 0;
-  return kind === 'silent' && isCount ? { t, kind, times: times as number } : undefined;
+function entryOfNumber(t: Seconds, kind: string, value: unknown): TraceEntry | undefined {
+  if (typeof value !== 'number' || !Number.isFinite(value) || value <= 0) return undefined;
+  if (kind === 'out-in') return { t, kind, seconds: value };
+  return kind === 'silent' && Number.isSafeInteger(value) ? { t, kind, times: value } : undefined;
 }
 
 function isLatin1(text: string): boolean {

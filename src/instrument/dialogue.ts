@@ -137,7 +137,7 @@ export class Dialogue {
     // In step again only once this question is answered: whatever is thrown below leaves that open.
     this.#inStep = false;
     await this.#send(message, rest);
-    const reply = await this.#line.reply(cut, { since: this.#line.sentAt, silence, atMost });
+    const reply = await this.#line.reply(cut, { since: this.#line.outAt, silence, atMost });
     if (reply === undefined) {
       this.#notice({ kind: 'out-of-step', question: visible(message) });
       throw new InstrumentSilentError({

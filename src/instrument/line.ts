@@ -39,10 +39,13 @@ export class Line {
   readonly #clock: Clock;
   readonly #reader: ReplyReader;
   readonly #sideTalk: SideTalk;
-  #quietSince = -Infinity;
-  /** The instrument hears nothing before. */
-  #deafUntil = -Infinity;
-  #sentAt = -Infinity;
+  /** When the port took the last message. */
+  #takenAt = -Infinity;
+  /** When the last message was out, or will be. */
+  #outAt = -Infinity;
+  /** For so long after that the instrument hears nothing. */
+  #rest: Seconds = 0;
+  #heardAt = -Infinity;
   #missing: Missing | undefined;
   /** Something was waited for in vain, and nothing has come since: what is only told does not wait again. */
   #isSilent = false;
@@ -56,8 +59,9 @@ export class Line {
     this.#sideTalk = new SideTalk(wire);
   }
 
-  get sentAt(): Seconds {
-    return this.#sentAt;
+  /** When the last message was out; where its port is slow, that may be yet to come. */
+  get outAt(): Seconds {
+    return this.#outAt;
   }
 
   /** The last message was not repeated, though it should have been. */
@@ -73,9 +77,10 @@ export class Line {
   async send(message: string, rest: Seconds = 0): Promise<void> {
     await this.#untilItHears(this.#isSilent ? 0 : this.#wire.timeout);
     const bytes = Buffer.from(message + this.#wire.sendEnd, 'latin1');
-    await this.#connection.write(bytes);
-    this.#sentAt = this.#quietSince = this.#clock.now();
-    this.#deafUntil = this.#sentAt + rest;
+    const onTheWay = await this.#connection.write(bytes);
+    this.#takenAt = this.#clock.now();
+    this.#outAt = this.#takenAt + onTheWay;
+    this.#rest = rest;
     this.#sideTalk.sent(message);
   }
 
@@ -92,7 +97,11 @@ export class Line {
     let deadline = Math.min(since + silence, end);
     for (;;) {
       const reply = this.#cut(cut);
-      if (reply !== undefined) return reply;
+      if (reply !== undefined) {
+        // It was out before it was answered, whatever the speed of its port says: not every port keeps to that.
+        this.#outAt = Math.min(this.#outAt, Math.max(this.#takenAt, this.#heardAt));
+        return reply;
+      }
       const left = deadline - this.#clock.now();
       const bytes = left > 0 ? await this.#connection.receive(left) : undefined;
       if (bytes === undefined) return undefined;
@@ -147,13 +156,14 @@ export class Line {
 
   async #untilItHears(patience: Seconds): Promise<void> {
     await this.#untilSettled(patience);
-    const pause = Math.max(this.#quietSince + this.#wire.gap, this.#deafUntil) - this.#clock.now();
+    const gapEnd = Math.max(this.#outAt, this.#heardAt) + this.#wire.gap;
+    const pause = Math.max(gapEnd, this.#outAt + this.#rest) - this.#clock.now();
     if (pause > 0) await this.#clock.sleep(pause);
   }
 
   /** Waits for what is due after the last message. Where that does not come, it goes on without. */
   async #untilSettled(patience: Seconds): Promise<void> {
-    const end = Math.max(this.#quietSince, this.#deafUntil) + patience;
+    const end = Math.max(this.#heardAt, this.#outAt + this.#rest) + patience;
     let afterwards = 0;
     while (!this.#sideTalk.isSettled(this.#reader)) {
       const left = Math.max(0, end - this.#clock.now());
@@ -171,7 +181,7 @@ export class Line {
   }
 
   #received(bytes: Uint8Array): void {
-    this.#quietSince = this.#clock.now();
+    this.#heardAt = this.#clock.now();
     this.#isSilent = false;
     this.#reader.push(bytes);
   }

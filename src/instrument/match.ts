@@ -100,11 +100,10 @@ async function meet({
   for (const sendEnd of sendEnds) {
     for (const identify of questions) {
       // Whoever spoke before may have died in the middle of a message.
-      await connection.write(Buffer.from(sendEnd, 'latin1'));
-      await clock.sleep(0.1);
+      await clock.sleep(0.1 + (await connection.write(Buffer.from(sendEnd, 'latin1'))));
       await hear(connection, 0);
-      await connection.write(Buffer.from(identify + sendEnd, 'latin1'));
-      const words = firstWords(await hear(connection, firstPatience), identify);
+      const onTheWay = await connection.write(Buffer.from(identify + sendEnd, 'latin1'));
+      const words = firstWords(await hear(connection, onTheWay + firstPatience), identify);
       if (words.reply !== undefined) return { identity: words.reply.trim(), words, sendEnd, identify };
       repeats ||= words.echo;
     }

@@ -1,3 +1,4 @@
+import { performance } from 'node:perf_hooks';
 import type { Duplex } from 'node:stream';
 import type { Seconds } from '../quantity/quantity.js';
 import { ConnectionLostError } from './connection-errors.js';
@@ -32,6 +33,8 @@ export class PortConnection implements Connection {
   readonly remark: Notice | undefined;
   readonly #port: OpenPort;
   readonly #incoming: Incoming;
+  /** When all that was written is out, in milliseconds of the machine's clock. */
+  #outAt = 0;
   #closed: Promise<void> | undefined;
 
   constructor(port: OpenPort) {
@@ -52,7 +55,7 @@ export class PortConnection implements Connection {
     port.stream.on('close', gone);
   }
 
-  write(bytes: Uint8Array): Promise<void> {
+  write(bytes: Uint8Array): Promise<Seconds> {
     if (this.#incoming.ended !== undefined) return Promise.reject(this.#incoming.ended);
     return new Promise((resolve, reject) => {
       const timer = setTimeout(() => {
@@ -62,7 +65,7 @@ export class PortConnection implements Connection {
       this.#port.stream.write(bytes, (error) => {
         clearTimeout(timer);
         if (error) reject(this.#lost(error.message, error));
-        else this.#untilOut(bytes.length, resolve);
+        else resolve(this.#onTheWay(bytes.length));
       });
     });
   }
@@ -76,15 +79,24 @@ export class PortConnection implements Connection {
     return this.#closed;
   }
 
-  /** A port takes bytes faster than it sends them, and pauses count from when they are out. */
-  #untilOut(count: number, done: () => void): void {
+  /** A port takes bytes faster than it sends them: so long these are behind, and what it took before them. */
+  #onTheWay(count: number): Seconds {
     const { perByte } = this.#port;
-    if (perByte === undefined) done();
-    else setTimeout(done, perByte * count * 1000);
+    if (perByte === undefined) return 0;
+    const now = performance.now();
+    this.#outAt = Math.max(this.#outAt, now) + perByte * count * 1000;
+    return (this.#outAt - now) / 1000;
   }
 
-  #sayGoodbye(): Promise<void> {
+  async #sayGoodbye(): Promise<void> {
+    const isThere = this.#incoming.ended === undefined;
     this.#lost('it was closed here');
+    const left = this.#outAt - performance.now();
+    if (isThere && left > 0) await new Promise((resolve) => setTimeout(resolve, left));
+    await this.#hangUp();
+  }
+
+  #hangUp(): Promise<void> {
     return new Promise((resolve) => {
       const timer = setTimeout(() => {
         this.#port.cut();

@@ -78,12 +78,12 @@ class ReplayConnection implements Connection {
     this.#time = time;
   }
 
-  async write(bytes: Uint8Array): Promise<void> {
+  async write(bytes: Uint8Array): Promise<Seconds> {
     const next = await this.#peek();
     if (next !== 'end' && next.kind === 'sent' && Buffer.from(bytes).equals(next.bytes)) {
       this.#time.reach(next.t);
       this.#tape.pass();
-      return;
+      return this.#onTheWay();
     }
     if (next !== 'end' && next.kind === 'lost') throw this.#lose(next);
     if (this.#lost !== undefined) throw this.#lost;
@@ -111,6 +111,13 @@ class ReplayConnection implements Connection {
     }
     await this.#time.wait(within);
     return undefined;
+  }
+
+  async #onTheWay(): Promise<Seconds> {
+    const next = await this.#peek();
+    if (next === 'end' || next.kind !== 'out-in') return 0;
+    this.#tape.pass();
+    return next.seconds;
   }
 
   close(): Promise<void> {
@@ -142,6 +149,8 @@ function inWords(entry: TraceEntry | 'end'): string {
     case 'sent':
     case 'received':
       return `"${visible(entry.bytes)}" ${entry.kind}`;
+    case 'out-in':
+      return 'the time until a message is out';
     case 'opened':
       return 'a new connection';
     case 'unreachable':

@@ -54,13 +54,16 @@ class TracedConnection implements Connection {
     this.#trace = trace;
   }
 
-  async write(bytes: Uint8Array): Promise<void> {
-    await this.#connection.write(bytes).catch((error: unknown) => {
+  async write(bytes: Uint8Array): Promise<Seconds> {
+    const onTheWay = await this.#connection.write(bytes).catch((error: unknown) => {
       this.#lost(error);
       throw error;
     });
     this.#silences = 0;
-    this.#trace({ t: this.#clock.happens(), kind: 'sent', bytes });
+    const t = this.#clock.happens();
+    this.#trace({ t, kind: 'sent', bytes });
+    if (onTheWay > 0) this.#trace({ t, kind: 'out-in', seconds: onTheWay });
+    return onTheWay;
   }
 
   /** What came within the time is noted within it, however late we had a turn to see that it had come. */

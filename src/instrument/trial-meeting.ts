@@ -41,8 +41,9 @@ export async function meet(line: TrialLine, tellFirst: readonly Message[]): Prom
   return { kind: 'silent', wire, remarks: [] };
 }
 
-async function say({ connection }: TrialLine, message: string, sendEnd: string): Promise<void> {
-  await connection.write(Buffer.from(message + sendEnd, 'latin1'));
+/** Done once it is out. */
+async function say({ connection, clock }: TrialLine, message: string, sendEnd: string): Promise<void> {
+  await clock.sleep(await connection.write(Buffer.from(message + sendEnd, 'latin1')));
 }
 
 /** All that comes until nothing does any more; `within` is how long the first of it may take. */

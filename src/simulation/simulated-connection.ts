@@ -38,7 +38,7 @@ export class SimulatedConnection implements Connection {
     );
   }
 
-  write(bytes: Uint8Array): Promise<void> {
+  write(bytes: Uint8Array): Promise<Seconds> {
     const now = this.#now();
     if (this.#closed || now >= this.#lostFrom - SAME_MOMENT) return Promise.reject(this.#lost());
     for (const incoming of this.#splitter.feed(bytes)) {
@@ -47,7 +47,7 @@ export class SimulatedConnection implements Connection {
         this.#underway.push({ due: readyAt + REPLY_LATENCY, bytes: new TextEncoder().encode(reply) });
       }
     }
-    return Promise.resolve();
+    return Promise.resolve(0);
   }
 
   async receive(within: Seconds): Promise<Uint8Array | undefined> {

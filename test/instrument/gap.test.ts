@@ -22,9 +22,9 @@ class CuttableLine implements Connection {
     this.#gone ??= reason;
   }
 
-  async write(bytes: Uint8Array): Promise<void> {
+  async write(bytes: Uint8Array): Promise<number> {
     if (this.#gone !== undefined) throw this.#lost(this.#gone);
-    await this.#line.write(bytes);
+    return this.#line.write(bytes);
   }
 
   async receive(within: number): Promise<Uint8Array | undefined> {

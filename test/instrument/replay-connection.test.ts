@@ -52,6 +52,17 @@ describe('a replayed dialogue', () => {
     await connection.close();
   });
 
+  it('has each message as long on its way as it was then', async () => {
+    const connection = await replay(
+      await fileOf(
+        `${header}{"t":0.1,"sent":"VOLT?\\n"}\n{"t":0.1,"out-in":0.0125}\n{"t":1,"sent":"INP?\\n"}\n`,
+      ),
+    );
+    expect(await connection.write(bytes('VOLT?\n'))).toBe(0.0125);
+    expect(await connection.write(bytes('INP?\n'))).toBe(0);
+    await connection.close();
+  });
+
   it.each([
     ['another message', ['MEAS:CURR?\n'], 2, '"MEAS:VOLT?\\n" sent'],
     ['a byte more', ['MEAS:VOLT?\r\n'], 2, '"MEAS:VOLT?\\n" sent'],

@@ -65,13 +65,25 @@ describe('a serial connection', () => {
     }
   });
 
-  it.skipIf(withoutSocat)('takes as long to send as its speed needs', async () => {
+  it.skipIf(withoutSocat)('says how long what it took is on its way, as its speed has it', async () => {
     const connection = await openSerial(at((await servePty(() => undefined)).path), { baud: 600 });
-    onTestFinished(() => connection.close());
     const began = performance.now();
-    await connection.write(Buffer.from('MEAS:VOLT?\n'));
-    // 11 bytes of 10 bits; a timer may be a millisecond early.
-    expect(performance.now() - began).toBeGreaterThan(182);
+    // 11 bytes of 10 bits, and those before them.
+    const first = await connection.write(Buffer.from('MEAS:VOLT?\n'));
+    expect(first).toBeCloseTo(110 / 600, 9);
+    const both = await connection.write(Buffer.from('MEAS:VOLT?\n'));
+    expect(both).toBeLessThanOrEqual(220 / 600);
+    expect(both).toBeGreaterThan(220 / 600 - (performance.now() - began) / 1000);
+    await connection.close();
+  });
+
+  it.skipIf(withoutSocat)('is closed once the last message is out', async () => {
+    const connection = await openSerial(at((await servePty(() => undefined)).path), { baud: 600 });
+    const began = performance.now();
+    await connection.write(Buffer.from('INP OFF;:*RST\n'));
+    await connection.close();
+    // 14 bytes of 10 bits; a timer may be a millisecond early.
+    expect(performance.now() - began).toBeGreaterThan(232);
   });
 
   it.skipIf(withoutSocat)(

@@ -178,7 +178,10 @@ it('an instrument that never stops talking is told to be safe all the same', asy
   const dialogue = new Dialogue({
     connection: {
       address: 'virtual:',
-      write: (bytes) => Promise.resolve(void sent.push(Buffer.from(bytes).toString().trimEnd())),
+      write: (bytes) => {
+        sent.push(Buffer.from(bytes).toString().trimEnd());
+        return Promise.resolve(0);
+      },
       receive: async (within) => {
         received += noise.length;
         // A test that does not end tells nobody why.
@@ -211,9 +214,9 @@ describe('an instrument that sends a prompt', () => {
     const { clock, line, dialogue } = talkTo(() => '', { prompt: '> ' });
     const at: number[] = [];
     const write = line.write.bind(line);
-    line.write = async (bytes) => {
+    line.write = (bytes) => {
       at.push(clock.now());
-      await write(bytes);
+      return write(bytes);
     };
     const slow = talkTo(prompting, { prompt: '> ' }, { cuts: () => [1] });
     await slow.dialogue.tell('INP OFF');

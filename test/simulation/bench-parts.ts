@@ -123,8 +123,8 @@ export function wireUp(simulation: Simulation): WiredBench {
   };
 }
 
-export function say(connection: Connection, message: string): Promise<void> {
-  return connection.write(new TextEncoder().encode(`${message}\n`));
+export async function say(connection: Connection, message: string): Promise<void> {
+  await connection.write(new TextEncoder().encode(`${message}\n`));
 }
 
 export async function ask(connection: Connection, message: string): Promise<string> {

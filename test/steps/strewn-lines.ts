@@ -123,9 +123,9 @@ class StrewnLine implements Connection {
     this.#gone ??= 'it dropped';
   }
 
-  write(bytes: Uint8Array): Promise<void> {
+  write(bytes: Uint8Array): Promise<number> {
     const message = Buffer.from(bytes).toString('latin1').trimEnd();
-    if (this.#gone === undefined && this.#instrument.hear(message)) return Promise.resolve();
+    if (this.#gone === undefined && this.#instrument.hear(message)) return Promise.resolve(0);
     return Promise.reject(this.#lost());
   }
 
