@@ -4,16 +4,8 @@ import { NoRecordError } from './record-error.js';
 
 /** No event is longer, in bytes without the end of its line. */
 export const longestLine = 1 << 20;
-/** How many bytes are asked for at once. */
-export const atOnce = {
-  /**
-   * Some dozens of lines. Their text is in use until the last of them was seen; what a collection of garbage finds in
-   * use it takes for lasting, and with blocks of some thousand lines that was a third of all memory, and no faster.
-   */
-  asText: 1 << 13,
-  /** Of bytes nothing is made that would have to be collected. */
-  asBytes: 1 << 18,
-} as const;
+/** How many bytes are asked for at once. Whoever makes texts of all of them keeps those from being collected. */
+const atOnce = 1 << 18;
 export const lineEnd = 0x0a;
 
 /** Whole lines, each with its end; or, of the last line of a file, what is there without an end. */
@@ -21,23 +13,19 @@ export type Block =
   { readonly kind: 'lines'; readonly bytes: Buffer } | { readonly kind: 'rest'; readonly bytes: Buffer };
 
 /**
- * Hands over a file's lines, as many at once as `readAtOnce` bytes hold, up to `upTo` bytes. The bytes are good until `visit` is back:
+ * Hands over a file's lines, as many at once as a quarter of a megabyte holds, up to `upTo` bytes. The bytes are good until `visit` is back:
  * the next ones take their place, so that memory does not grow with the file. A line that is far too long ends the
  * reading, as rest.
  * @throws NoRecordError when it can't be read.
  */
-export function eachBlock(
-  path: string,
-  { upTo, readAtOnce }: { readonly upTo: number; readonly readAtOnce: number },
-  visit: (block: Block) => 'go on' | 'stop',
-): void {
+export function eachBlock(path: string, upTo: number, visit: (block: Block) => 'go on' | 'stop'): void {
   const file = opened(path);
   try {
-    const room = Buffer.allocUnsafe(longestLine + readAtOnce);
+    const room = Buffer.allocUnsafe(longestLine + atOnce);
     let kept = 0;
     let left = upTo;
     while (left > 0 && kept <= longestLine) {
-      const count = readInto(room.subarray(kept, kept + Math.min(readAtOnce, left)), file, path);
+      const count = readInto(room.subarray(kept, kept + Math.min(atOnce, left)), file, path);
       if (count === 0) break;
       left -= count;
       const read = room.subarray(0, kept + count);

@@ -1,4 +1,4 @@
-import { atOnce, type Block, eachBlock, lineEnd, longestLine } from './journal-blocks.js';
+import { type Block, eachBlock, lineEnd, longestLine } from './journal-blocks.js';
 import { isSealed, newSealer, sealHolds } from './seal.js';
 
 /** How much of a journal can be believed. */
@@ -27,9 +27,7 @@ export const otherHeader = 'it does not begin with the run.json that is here now
  */
 export function checkJournal(path: string): Integrity {
   const check = new JournalCheck();
-  eachBlock(path, { upTo: Number.POSITIVE_INFINITY, readAtOnce: atOnce.asBytes }, (block) =>
-    check.add(block),
-  );
+  eachBlock(path, Number.POSITIVE_INFINITY, (block) => check.add(block));
   return check.result();
 }
 

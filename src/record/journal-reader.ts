@@ -1,7 +1,8 @@
-import { atOnce, eachBlock, lineEnd } from './journal-blocks.js';
+import { eachBlock, lineEnd } from './journal-blocks.js';
 import type { Integrity } from './journal-check.js';
 import type { TimedEvent } from './journal-event.js';
 import { parseLine } from './journal-line.js';
+import { ReadingLines } from './reading-line.js';
 
 /**
  * Hands over the events of a journal in order, as far as `integrity` believes it.
@@ -12,37 +13,36 @@ export function readJournal(
   integrity: Integrity,
   visit: (event: TimedEvent) => void,
 ): Integrity {
+  const readings = new ReadingLines();
   let lines = 0;
   let bytes = 0;
   let result = integrity;
-  eachBlock(path, { upTo: integrity.bytes, readAtOnce: atOnce.asText }, (block) => {
-    const before = lines;
-    for (const line of linesOf(block.bytes)) {
-      const event = parseLine(line, lines === 0);
+  eachBlock(path, integrity.bytes, (block) => {
+    for (let start = 0; start < block.bytes.length;) {
+      // No journal begins with a reading.
+      const reading = lines === 0 ? undefined : readings.read(block.bytes, start);
+      const end = reading === undefined ? endOfLine(block.bytes, start) : readings.end;
+      const event = reading ?? parseLine(lineOf(block.bytes, start, end), lines === 0);
       if (event === undefined) {
-        bytes += bytesOfLines(block.bytes, lines - before);
         result = { kind: 'damaged', lines, bytes, line: lines + 1, problem: 'the line is no event' };
         return 'stop';
       }
       lines += 1;
+      bytes += end - start;
+      start = end;
       visit(event);
     }
-    bytes += block.bytes.length;
     return 'go on';
   });
   return result;
 }
 
-/** Decoded at once: the end of a line is part of no longer sequence in UTF-8. */
-function linesOf(bytes: Buffer): readonly string[] {
-  const lines = bytes.toString('utf8').split('\n');
-  if (bytes.at(-1) === lineEnd) lines.pop();
-  return lines;
+/** Behind the line that begins there. */
+function endOfLine(bytes: Buffer, start: number): number {
+  return bytes.indexOf(lineEnd, start) + 1 || bytes.length;
 }
 
-/** How many bytes the first lines of a block take, with their ends. */
-function bytesOfLines(bytes: Buffer, lines: number): number {
-  let length = 0;
-  for (let line = 0; line < lines; line += 1) length = bytes.indexOf(lineEnd, length) + 1;
-  return length;
+/** Without its end. */
+function lineOf(bytes: Buffer, start: number, end: number): string {
+  return bytes.toString('utf8', start, bytes[end - 1] === lineEnd ? end - 1 : end);
 }
