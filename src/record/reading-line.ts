@@ -1,6 +1,6 @@
 import { lineEnd } from './journal-blocks.js';
 import type { ReadingTaken, TimedEvent } from './journal-event.js';
-import { KnownTexts } from './known-texts.js';
+import { ReadingSources } from './reading-source.js';
 
 type TimedReading = TimedEvent & ReadingTaken;
 
@@ -9,15 +9,9 @@ const beforeTime = bytesOf('{"t":');
 const beforeStep = bytesOf(',"event":"reading","step":');
 const beforePoint = bytesOf(',"point":');
 const beforeSample = bytesOf(',"sample":');
-const beforeOf = bytesOf(',"of":"');
-const beforeWhat = bytesOf('","what":"');
-const beforeAt = bytesOf('","at":"');
-const beforeValue = bytesOf('","value":');
-const quote = 0x22;
 const minus = 0x2d;
 const dot = 0x2e;
 const zero = 0x30;
-const backslash = 0x5c;
 const closingBrace = 0x7d;
 
 /** The powers of ten that a double holds exactly. */
@@ -30,10 +24,9 @@ const tens: readonly number[] = Array.from({ length: 23 }, (_, power) => Number(
  * decide.
  */
 export class ReadingLines {
-  readonly #texts = new KnownTexts();
-  /** What was read last, up to the place that was handed over. */
+  readonly #sources = new ReadingSources();
+  /** The number that was read last. */
   #number = 0;
-  #text = '';
   #end = 0;
 
   /** Where the line ended that was read last, its end included. */
@@ -51,20 +44,17 @@ export class ReadingLines {
     const point = this.#number;
     at = this.#passCount(bytes, passed(bytes, at, beforeSample));
     const sample = this.#number;
-    at = this.#passText(bytes, passed(bytes, at, beforeOf));
-    const of = this.#text;
-    at = this.#passText(bytes, passed(bytes, at, beforeWhat));
-    const what = this.#text;
-    const place = this.#passText(bytes, passed(bytes, at, beforeAt));
-    const where = this.#text;
-    at = this.#passNumber(bytes, passed(bytes, place === nowhere ? at : place, beforeValue));
+    const source = at === nowhere ? undefined : this.#sources.at(bytes, at);
+    if (source === undefined) return undefined;
+    at = this.#passNumber(bytes, this.#sources.end);
     const value = this.#number;
     if (at === nowhere || bytes[at] !== closingBrace || bytes[at + 1] !== lineEnd) return undefined;
     this.#end = at + 2;
+    const { of, what, at: place } = source;
     // Two literals, and no spread: each is of one hidden class from the start.
-    return place === nowhere
+    return place === undefined
       ? { t, event: 'reading', step, point, sample, of, what, value }
-      : { t, event: 'reading', step, point, sample, of, what, at: where, value };
+      : { t, event: 'reading', step, point, sample, of, what, at: place, value };
   }
 
   /** A whole number from 1 on; where it ends. */
@@ -100,16 +90,6 @@ export class ReadingLines {
     this.#number = first === start ? size : -size;
     return at;
   }
-
-  /** A text up to its closing quote, without anything that JSON would escape, and in ASCII; where it ends. */
-  #passText(bytes: Uint8Array, start: number): number {
-    if (start === nowhere) return nowhere;
-    let at = start;
-    while (isPlain(bytes[at])) at += 1;
-    if (bytes[at] !== quote) return nowhere;
-    this.#text = this.#texts.from(bytes, start, at);
-    return at;
-  }
 }
 
 /** What comes is something else; nothing is read there. */
@@ -130,8 +110,4 @@ function digit(byte = zero): number {
 
 function isDigit(byte = 0): boolean {
   return byte >= zero && byte <= 0x39;
-}
-
-function isPlain(byte = 0): boolean {
-  return byte >= 0x20 && byte < 0x7f && byte !== quote && byte !== backslash;
 }
