@@ -55,8 +55,16 @@ export function groupLooks(evidence: Evidence): readonly GroupLook[] {
 function withCurrents(header: RunHeader, look: PlaceLook): GroupLook {
   const total = mean(look.points.map(({ current }) => current.mean));
   const moved = movement(look.points, total);
+  // Field by field: a spread at the head of a literal costs more than all the rest, once for each look and module.
   return {
-    ...look,
+    step: look.step,
+    kind: look.kind,
+    without: look.without,
+    set: look.set,
+    time: look.time,
+    outcome: look.outcome,
+    places: look.places,
+    points: look.points,
     total,
     totalScatter: scatterOfMean(look.points.map(({ current }) => current)),
     currents: header.modules.flatMap(({ name }, index) => {
@@ -76,7 +84,6 @@ function currentOf(
 ): ModuleCurrent {
   const { resistance } = ballast;
   const current = volts.mean / resistance;
-  // Field by field: a spread at the head of a literal costs more than all the rest, once for each look and module.
   return {
     module: where.module,
     place: where.place,
@@ -132,6 +139,9 @@ export interface Weights {
   readonly ballastsAlike?: boolean;
 }
 
+/** The part of a look that goes into a budget. */
+type Carried = Pick<GroupLook, 'currents' | 'total' | 'totalScatter'>;
+
 /**
  * The budget of Σ wₖ·Iₖ + w·I_load at a look (JCGM 100:2008, 5.2.2, where one error goes into several
  * quantities): what one instrument does to all that it read is added up with its signs before it is squared.
@@ -140,35 +150,39 @@ export interface Weights {
  */
 export function budgetOf(
   header: RunHeader,
-  { currents, total, totalScatter }: GroupLook,
+  { currents, total, totalScatter }: Carried,
   { modules: weights, load = 0, ballastsAlike = false }: Weights,
 ): readonly Contribution[] {
-  const weighted = currents.map((each, index) => ({ ...each, weight: weights[index] ?? 0 }));
-  const meters = [...new Set(weighted.map(({ place }) => meterOf(header, place)))];
+  const weighted = currents.map((each, index) => {
+    const weight = weights[index] ?? 0;
+    const meter = meterOf(header, each.place);
+    return { meter, current: weight * each.current, perVolt: weight / each.ballast };
+  });
+  const meters = [...new Set(weighted.map(({ meter }) => meter))];
   const scatter = together([
-    ...weighted.map((each) => scaled(each.scatter, each.weight)),
+    ...currents.map((each, index) => scaled(each.scatter, weights[index] ?? 0)),
     scaled(totalScatter, load),
   ]);
-  const drift = Math.hypot(...weighted.map((each) => each.weight * each.drift));
-  const byBallast = weighted.map((each) => each.weight * each.current * each.ballastUncertainty);
+  const drift = Math.hypot(...currents.map((each, index) => (weights[index] ?? 0) * each.drift));
+  const byBallast = currents.map(
+    (each, index) => (weights[index] ?? 0) * each.current * each.ballastUncertainty,
+  );
   return [
     { name: 'scatter of the readings', kind: 'A', ...scatter },
     ...meters.flatMap((meter) => {
       const errors = promisedErrors(header, meter, 'voltage');
-      const its = weighted.filter(({ place }) => meterOf(header, place) === meter);
+      const its = weighted.filter((each) => each.meter === meter);
+      const perVolt = its.map((each) => each.perVolt);
       return [
-        promised(`${errors.of}, gain`, errors.gain * sum(its.map((each) => each.weight * each.current))),
-        promised(`${errors.of}, offset`, errors.offset * sum(its.map((each) => each.weight / each.ballast))),
-        promised(
-          `${errors.of}, resolution`,
-          errors.resolution * Math.hypot(...its.map((each) => each.weight / each.ballast)),
-        ),
+        promised(`${errors.of}, gain`, errors.gain * sum(its.map(({ current }) => current))),
+        promised(`${errors.of}, offset`, errors.offset * sum(perVolt)),
+        promised(`${errors.of}, resolution`, errors.resolution * Math.hypot(...perVolt)),
       ];
     }),
     ...(ballastsAlike
       ? [promised('ballasts, all alike', sum(byBallast))]
       : byBallast.map((uncertainty, index) =>
-          promised(`ballast of ${weighted[index]?.module ?? ''}`, uncertainty),
+          promised(`ballast of ${currents[index]?.module ?? ''}`, uncertainty),
         )),
     ...(drift === 0 ? [] : [promised('drift between the passes', drift)]),
     ...(load === 0 ? [] : loadBudget(header, total, load)),
@@ -179,8 +193,12 @@ export function budgetOf(
  * How far off the current of one module may be, by its place among the look's currents. Nobody else's current
  * goes into it, so the others are left out: a look at a group costs in proportion to its modules.
  */
-export function ownUncertainty(header: RunHeader, look: GroupLook, index: number): CombinedStandard {
-  const alone = { ...look, currents: look.currents.slice(index, index + 1) };
+export function ownUncertainty(
+  header: RunHeader,
+  { currents, total, totalScatter }: GroupLook,
+  index: number,
+): CombinedStandard {
+  const alone = { currents: currents.slice(index, index + 1), total, totalScatter };
   return combineStandard(budgetOf(header, alone, { modules: [1] }));
 }
 
