@@ -168,7 +168,12 @@ export function budgetOf(
     (each, index) => (weights[index] ?? 0) * each.current * each.ballastUncertainty,
   );
   return [
-    { name: 'scatter of the readings', kind: 'A', ...scatter },
+    {
+      name: 'scatter of the readings',
+      kind: 'A',
+      uncertainty: scatter.uncertainty,
+      degreesOfFreedom: scatter.degreesOfFreedom,
+    },
     ...meters.flatMap((meter) => {
       const errors = promisedErrors(header, meter, 'voltage');
       const its = weighted.filter((each) => each.meter === meter);

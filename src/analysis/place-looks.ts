@@ -41,6 +41,7 @@ export interface PlaceRead {
  */
 export function placeLooks({ circuit, modules }: RunHeader, step: StepEvidence): readonly PlaceLook[] {
   const across = circuit === 'parallel' ? 'ballast' : 'output';
+  const taps = modules.map(({ name }) => ({ name, at: `${across}-of-${name}` }));
   const joined = new Map<string, Omit<PlaceLook, 'places'> & { readonly places: Map<string, PlaceRead> }>();
   for (const { point, kind, without, time } of rolesIn(step.points)) {
     if (point.outcome === undefined) continue;
@@ -48,8 +49,8 @@ export function placeLooks({ circuit, modules }: RunHeader, step: StepEvidence):
     const key = `${kind} ${without ?? ''} ${set ?? 'off'} ${time}`;
     const known = joined.get(key);
     const places = known?.places ?? new Map<string, PlaceRead>();
-    for (const { name } of modules) {
-      const volts = point.taps.get(`${across}-of-${name}`);
+    for (const { name, at } of taps) {
+      const volts = point.taps.get(at);
       if (volts !== undefined && volts.count > 0) places.set(name, { volts, point });
     }
     joined.set(key, {
