@@ -30,7 +30,8 @@ export const dialogueFormat = 'railproof/dialogue 1';
 /**
  * The file format of a recorded dialogue is JSON Lines: a first line that names the format and the address,
  * then a line for each thing that happened: `{"t":0.1,"sent":"*IDN?\n"}`. Text is Latin-1, one character a
- * byte, so every byte survives, and JSON keeps every digit of a time. Times are in seconds: those of the
+ * byte, so every byte survives, and JSON keeps every digit of a time. Behind what was sent over a slow port stands
+ * for how many more seconds it was on its way: `{"t":0.1,"out-in":0.0125}`. Times are in seconds: those of the
  * dialogue itself, or, from the first `opened` or `unreachable` on, those of a run, which all its dialogues share.
  */
 export function dialogueHeader(address: string): string {

@@ -18,6 +18,13 @@ export const dialogueLineSchema = z
     z.strictObject({ t, unreachable: z.string().describe('None could be made; why.') }),
     z.strictObject({ t, busy: z.string().describe('Somebody else had it; why.') }),
     z.strictObject({ t, sent: bytes('What was sent.') }),
+    z.strictObject({
+      t,
+      'out-in': z
+        .number()
+        .positive()
+        .describe('How many more seconds what was sent just before was on its way out, over a slow port.'),
+    }),
     z.strictObject({ t, received: bytes('What came.') }),
     z.strictObject({ t, lost: z.string().describe('The connection was lost; why.') }),
     z.strictObject({

@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { EventClock } from '../../src/clock/event-clock.js';
 import { VirtualClock } from '../../src/clock/virtual-clock.js';
-import type { TraceEntry } from '../../src/instrument/dialogue-record.js';
+import { dialogueLine, readDialogueLine, type TraceEntry } from '../../src/instrument/dialogue-record.js';
+import { dialogueLineSchema } from '../../src/instrument/dialogue-schema.js';
 import { Dialogue } from '../../src/instrument/dialogue.js';
 import { tracedConnection } from '../../src/instrument/traced-connection.js';
 import { type Arrival, VirtualLine } from './fixtures/virtual-line.js';
@@ -74,5 +75,8 @@ describe('over a port that takes bytes faster than it sends them', () => {
     await dialogue.ask('VOLT?');
     expect(trace.map(({ kind }) => kind)).toEqual(['opened', 'sent', 'out-in', 'received']);
     expect(trace[2]).toEqual({ t: 0, kind: 'out-in', seconds: 6 * perByte });
+    const lines = trace.map((entry) => dialogueLine(entry).trimEnd());
+    expect(lines.map(readDialogueLine)).toEqual(trace);
+    for (const line of lines) expect(dialogueLineSchema.safeParse(JSON.parse(line)).success).toBe(true);
   });
 });
